@@ -1,0 +1,1 @@
+//! Contact pressure to local conductance.

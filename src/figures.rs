@@ -1,0 +1,1 @@
+//! Drawings from results only.

@@ -1,0 +1,506 @@
+//! The checked joint: SI, nothing missing, every default already recorded as an assumption.
+
+use crate::{
+    catalog::{self, Material},
+    diagnostic::Assumption,
+};
+
+/// Everything the chain needs to know of one joint. Lengths in m, every other value in SI.
+///
+/// Plan coordinates are those of the first plate: from its lower left corner, or from its centre
+/// when it is round. The first plate is the warm side and lies on top.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Joint {
+    /// Title, as the file gives it.
+    pub title: String,
+    /// Medium, temperatures, heat and what is required.
+    pub service: Service,
+    /// Plates from warm to cold; two.
+    pub plates: Vec<Plate>,
+    /// Where heat enters the first plate.
+    pub source: Source,
+    /// Where heat leaves the last plate.
+    pub sink: Sink,
+    /// Groups of like fasteners; at least one, each with at least one place.
+    pub fasteners: Vec<Fastener>,
+    /// How the faces touch.
+    pub contact: Contact,
+    /// What fills the gaps instead of the medium.
+    pub filler: Option<Filler>,
+    /// The user's own measurements; they override the laws.
+    pub measured: Option<Measured>,
+    /// Losses of clamp force asked for; without them losses act on the low force only.
+    pub losses: Option<Losses>,
+    /// What the file did not state.
+    pub assumptions: Vec<Assumption>,
+}
+
+/// A value between its bounds: `low ≤ nominal ≤ high`.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Bounds {
+    /// Lowest value.
+    pub low: f64,
+    /// The value of the nominal chain.
+    pub nominal: f64,
+    /// Highest value.
+    pub high: f64,
+}
+
+impl Bounds {
+    /// A value without spread.
+    pub const fn exact(nominal: f64) -> Self {
+        Self {
+            low: nominal,
+            nominal,
+            high: nominal,
+        }
+    }
+
+    /// The value at a place between the bounds: −1 is low, 0 nominal, +1 high, linear between.
+    pub fn at(&self, place: f64) -> f64 {
+        if place < 0.0 {
+            self.nominal + place * (self.nominal - self.low)
+        } else {
+            self.nominal + place * (self.high - self.nominal)
+        }
+    }
+}
+
+/// What surrounds the joint and what is asked of it.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Service {
+    /// Vacuum or a gas.
+    pub medium: Medium,
+    /// One case, named `service`, or the cases `hot` and `cold`, hot first.
+    pub cases: Vec<Case>,
+    /// Temperature at which the bolts were tightened, K.
+    pub assembly_temperature: f64,
+    /// Heat through the joint, W.
+    pub heat: Option<f64>,
+    /// What the joint must meet.
+    pub require: Option<Requirement>,
+}
+
+/// A sink temperature with its name.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Case {
+    /// `service`, `hot` or `cold`.
+    pub name: &'static str,
+    /// Mean sink surface temperature, K.
+    pub temperature: f64,
+}
+
+/// What fills the space between the faces where nothing else does.
+#[derive(Clone, Debug, PartialEq)]
+pub enum Medium {
+    /// No gas at all.
+    Vacuum,
+    /// A gas at an absolute pressure, Pa.
+    Gas {
+        /// The gas.
+        gas: catalog::Gas,
+        /// Absolute pressure, Pa.
+        pressure: f64,
+    },
+}
+
+/// The limit a joint must meet.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Requirement {
+    /// Which quantity is limited.
+    pub kind: RequirementKind,
+    /// Limit in K, K/W or W/K.
+    pub limit: f64,
+    /// Whether the value must stay below or above the limit.
+    pub bound: Limit,
+}
+
+/// The quantity a requirement limits.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum RequirementKind {
+    /// Mean source above mean sink surface, K.
+    Rise,
+    /// Hottest point of the first plate above the mean sink surface, K.
+    HottestRise,
+    /// Mean temperature drop across the interface, K.
+    InterfaceDrop,
+    /// One of the results, as resistance, K/W.
+    Resistance(Plane),
+    /// One of the results, as conductance, W/K.
+    Conductance(Plane),
+}
+
+/// The pair of planes between which a result stands.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Plane {
+    /// The faying faces alone: the ring sum.
+    Contact,
+    /// Mean of the first plate to mean of the last.
+    NodeToNode,
+    /// What the joint adds to the same path with perfect contact.
+    AddedByJoint,
+    /// Mean of the heated zone to mean of the sink surface.
+    SourceToSink,
+}
+
+/// The side of a limit on which a value must lie.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Limit {
+    /// At most the limit.
+    Most,
+    /// At least the limit.
+    Least,
+}
+
+/// One plate.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Plate {
+    /// Name by which other tables and results call it.
+    pub name: String,
+    /// Material, from the catalogue or the file.
+    pub material: Material,
+    /// Thickness, m.
+    pub thickness: f64,
+    /// Outline in plan, in the plate's own coordinates.
+    pub outline: Outline,
+    /// Where the plate's own origin lies in joint coordinates, m.
+    pub origin: [f64; 2],
+    /// The faying face.
+    pub finish: Finish,
+    /// Stated total out-of-flatness of the faying face, m.
+    pub flatness: Option<f64>,
+    /// Height of a known bow, m: positive concave (open at the centre), negative convex.
+    pub bow: Option<f64>,
+}
+
+/// Shape in plan.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum Outline {
+    /// From the origin (lower left corner) to `size`, m.
+    Rectangle {
+        /// Width and height, m.
+        size: [f64; 2],
+    },
+    /// About the origin.
+    Disc {
+        /// Radius, m.
+        radius: f64,
+    },
+}
+
+/// The faying face of a plate.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Finish {
+    /// Root-mean-square roughness Rq, m.
+    pub roughness: Bounds,
+    /// Root-mean-square slope of the asperities, 1.
+    pub slope: f64,
+    /// Factor by which the slope may be off either way, one standard deviation.
+    pub slope_factor: f64,
+    /// What lies on the face.
+    pub coating: Option<Coating>,
+}
+
+/// A plating or film on a face.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Coating {
+    /// The catalogue record.
+    pub plating: catalog::Plating,
+    /// Thickness, m.
+    pub thickness: f64,
+}
+
+/// Where heat enters the outer face of the first plate.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Source {
+    /// The heated zone.
+    pub zone: Zone,
+    /// One temperature over the zone instead of uniform flux.
+    pub isothermal: bool,
+}
+
+/// A part of an outer face, in joint coordinates.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum Zone {
+    /// The whole outer face.
+    Face,
+    /// A rectangle parallel to the axes.
+    Rectangle {
+        /// Centre, m.
+        centre: [f64; 2],
+        /// Width and height, m.
+        size: [f64; 2],
+    },
+    /// A disc.
+    Disc {
+        /// Centre, m.
+        centre: [f64; 2],
+        /// Radius, m.
+        radius: f64,
+    },
+}
+
+/// Where heat leaves the last plate.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum Sink {
+    /// The whole back face at one temperature.
+    IsothermalBack,
+    /// A film on the whole back face, W/(m² K).
+    Film(f64),
+    /// The rim of a round plate at one temperature, back insulated.
+    Rim,
+}
+
+/// A group of like fasteners.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Fastener {
+    /// Thread.
+    pub thread: catalog::Thread,
+    /// Strength grade and bolt material.
+    pub grade: catalog::Grade,
+    /// Annulus on which the head (or its washer) presses the plate it sits on.
+    pub head_seat: Seat,
+    /// Annulus on which the nut presses, when there is one.
+    pub nut_seat: Option<Seat>,
+    /// Radius of the annulus on which friction turns, mean, m.
+    pub friction_radius: f64,
+    /// Whether the seat is a cone (countersunk head).
+    pub conical_seat: bool,
+    /// Hole radius in the first and the last plate, m.
+    pub hole_radius: [f64; 2],
+    /// Total thickness of washers in the grip, m.
+    pub washer_thickness: f64,
+    /// How the far end holds.
+    pub engagement: Engagement,
+    /// How the bolt is tightened.
+    pub tightening: Tightening,
+    /// Index of the plate on which the head sits.
+    pub head_plate: usize,
+    /// Whether the shank conducts heat.
+    pub shank_path: bool,
+    /// Places in joint coordinates, m.
+    pub places: Vec<[f64; 2]>,
+}
+
+/// A flat annulus that carries the clamp force.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Seat {
+    /// Inner radius, m.
+    pub inner_radius: f64,
+    /// Outer radius, m.
+    pub outer_radius: f64,
+}
+
+/// How the far end of a bolt holds.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum Engagement {
+    /// A nut on the outer face of the far plate.
+    Nut,
+    /// A thread cut in the far plate.
+    Tapped {
+        /// Engaged length, m.
+        length: f64,
+    },
+    /// A threaded insert in the far plate.
+    Insert {
+        /// Engaged length, m.
+        length: f64,
+    },
+}
+
+/// How a bolt gets its clamp force.
+#[derive(Clone, Debug, PartialEq)]
+pub enum Tightening {
+    /// By torque.
+    Torque(TorqueTightening),
+    /// The clamp force is known, N.
+    Preload(Bounds),
+}
+
+/// Tightening by torque.
+#[derive(Clone, Debug, PartialEq)]
+pub struct TorqueTightening {
+    /// Torque at the wrench, running torque included, N m.
+    pub torque: f64,
+    /// Tolerance of the tool, as a fraction.
+    pub tolerance: f64,
+    /// Running (prevailing) torque of the locking feature, N m.
+    pub running: f64,
+    /// Whether the file states the running torque.
+    pub running_stated: bool,
+    /// Friction.
+    pub friction: Friction,
+    /// Half-width of the scatter of the tightening method, as a fraction; when given it stands
+    /// for friction and tool together.
+    pub scatter: Option<f64>,
+}
+
+/// Friction of thread and head.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum Friction {
+    /// Coefficients; both move together between their bounds unless stated otherwise.
+    Coefficients {
+        /// Between the threads.
+        thread: Bounds,
+        /// Under the turned head or nut.
+        head: Bounds,
+    },
+    /// Nut factor K of T = K d F.
+    NutFactor(Bounds),
+}
+
+/// How the faces touch.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Contact {
+    /// Law of the solid spots.
+    pub law: Law,
+    /// Rule for the extent of contact.
+    pub cone: ConeRule,
+    /// Shape of the pressure over the radius.
+    pub shape: ConeShape,
+    /// Hemispherical emissivity of the two faces.
+    pub emissivity: [f64; 2],
+}
+
+/// Law of the solid spots.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Law {
+    /// Sridhar & Yovanovich 1996: continuous from elastic to plastic.
+    ElasticPlastic,
+    /// Yovanovich 1982.
+    Plastic,
+    /// Mikic 1974.
+    Elastic,
+    /// 1.25 (P/H)^0.95 at any pressure, for comparison with papers.
+    PlasticPower,
+}
+
+/// Rule for the extent of contact.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum ConeRule {
+    /// The fitted law of this house.
+    Fitted,
+    /// A fixed half-angle, rad.
+    HalfAngle(f64),
+    /// The angle of the stiffness cone of VDI 2230.
+    Vdi,
+}
+
+/// Shape of the pressure between hole and contact edge.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum ConeShape {
+    /// The fitted power shape; belongs to the fitted rule.
+    Fitted,
+    /// One pressure.
+    Uniform,
+    /// Straight to zero at the edge.
+    Linear,
+    /// Quartic with zero value, slope and curvature at the edge.
+    Polynomial,
+}
+
+/// What fills the joint.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Filler {
+    /// Name for people.
+    pub name: String,
+    /// How it conducts.
+    pub kind: FillerKind,
+    /// Factor by which its resistance may be off either way, one standard deviation.
+    pub factor: f64,
+}
+
+/// How a filler conducts.
+#[derive(Clone, Debug, PartialEq)]
+pub enum FillerKind {
+    /// A liquid in the gaps beside the solid spots.
+    Fluid {
+        /// Conductivity, W/(m K).
+        conductivity: f64,
+    },
+    /// A layer of known thickness: R″ = t/k + boundary.
+    Layer {
+        /// Conductivity, W/(m K).
+        conductivity: f64,
+        /// Thickness, m.
+        thickness: f64,
+        /// Both boundaries together, m² K/W.
+        boundary: f64,
+    },
+    /// A filled paste whose bond line thins under pressure.
+    Paste {
+        /// Conductivity, W/(m K).
+        conductivity: f64,
+        /// Yield stress, Pa.
+        yield_stress: f64,
+        /// Thinnest bond line: the largest filler particle, m.
+        thinnest: f64,
+        /// Thickness as applied, which stays where the pressure is nil, m.
+        applied: f64,
+    },
+    /// Area resistance against pressure.
+    Table {
+        /// (pressure, Pa; area resistance, m² K/W), pressure rising.
+        points: Vec<(f64, f64)>,
+    },
+}
+
+/// The user's own measurements.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Measured {
+    /// What was measured.
+    pub kind: MeasuredKind,
+    /// Factor by which they may be off either way, one standard deviation.
+    pub factor: f64,
+}
+
+/// What was measured.
+#[derive(Clone, Debug, PartialEq)]
+pub enum MeasuredKind {
+    /// (pressure, Pa; conductance, W/(m² K)), pressure rising; log-log between.
+    Local {
+        /// The points.
+        points: Vec<(f64, f64)>,
+    },
+    /// W/K of one bolt: G = conductance · (F/force)^force_exponent · (T/temperature)^temperature_exponent.
+    ForceLaw {
+        /// Conductance at the reference, W/K.
+        conductance: f64,
+        /// Reference force, N.
+        force: f64,
+        /// Exponent of the force, 1.
+        force_exponent: f64,
+        /// Reference temperature, K.
+        temperature: f64,
+        /// Exponent of the temperature, 1.
+        temperature_exponent: f64,
+    },
+}
+
+/// Losses of clamp force that the file asks for.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Losses {
+    /// Sum of settling over all contacts, m; from the guide values when the file says so.
+    pub settling: f64,
+    /// Short-term relaxation as a fraction of the clamp force.
+    pub relaxation: f64,
+}
+
+impl Joint {
+    /// The warm plate, on top.
+    pub fn warm(&self) -> &Plate {
+        &self.plates[0]
+    }
+
+    /// The cold plate.
+    pub fn cold(&self) -> &Plate {
+        &self.plates[self.plates.len() - 1]
+    }
+
+    /// Every bolt in file order: its group and its place.
+    pub fn bolts(&self) -> impl Iterator<Item = (&Fastener, [f64; 2])> {
+        self.fasteners
+            .iter()
+            .flat_map(|group| group.places.iter().map(move |place| (group, *place)))
+    }
+}

@@ -1,0 +1,31 @@
+//! Torque to thermal resistance of a bolted joint.
+//!
+//! The modules stand in the order in which force and heat flow; each uses only those above it.
+
+pub mod numerics;
+
+pub mod units;
+
+pub mod diagnostic;
+
+pub mod catalog;
+
+pub mod joint;
+
+pub mod preload;
+
+pub mod pressure;
+
+pub mod conductance;
+
+pub mod resistance;
+
+pub mod estimate;
+
+pub mod uncertainty;
+
+pub mod report;
+
+pub mod figures;
+
+pub mod cli;

@@ -1,0 +1,1 @@
+//! Clamp force to contact pressure.

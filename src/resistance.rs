@@ -1,0 +1,1 @@
+//! Local conductance to the resistances of the joint.

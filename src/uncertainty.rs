@@ -1,0 +1,1 @@
+//! Scatter of inputs to low, nominal and high, and what dominates.

@@ -1,0 +1,1 @@
+//! Text with a unit ⇄ SI; units exist only here.
