@@ -179,3 +179,73 @@ pub struct Estimate {
     /// What the file did not state.
     pub assumptions: Vec<Assumption>,
 }
+
+/// One torque of a sweep.
+#[derive(Clone, Debug, PartialEq)]
+pub struct TorquePoint {
+    /// Torque at the wrench, N m.
+    pub torque: f64,
+    /// Clamp force at assembly, N.
+    pub force: Band,
+    /// Source to sink, K/W.
+    pub source_to_sink: Band,
+    /// Contact only, K/W.
+    pub contact: Band,
+    /// What the joint adds, K/W.
+    pub added_by_joint: Band,
+    /// Equivalent stress over yield: nominal and at the highest force.
+    pub strength_use: Option<[f64; 2]>,
+    /// Whether every strength limit holds at this torque.
+    pub passes: bool,
+}
+
+/// Resistance against the torque of one fastener group, the others as stated.
+#[derive(Clone, Debug, PartialEq)]
+pub struct TorqueSweep {
+    /// Title of the joint.
+    pub title: String,
+    /// Group that is varied, for people: `M4 socket, 6 places`.
+    pub group: String,
+    /// Torque stated in the file, N m.
+    pub stated: f64,
+    /// Largest torque that passes every limit, N m, and the limit that ends it.
+    pub largest: Option<(f64, &'static str)>,
+    /// Torque of the lowest source-to-sink resistance within the sweep, N m.
+    pub best: f64,
+    /// Points, torque rising.
+    pub points: Vec<TorquePoint>,
+    /// Requirement in K/W of source to sink, where one can be put so.
+    pub required: Option<(f64, Limit)>,
+    /// Cautions.
+    pub cautions: Vec<Caution>,
+}
+
+/// The plan of the joint and its fields at nominal, for drawings.
+#[derive(Clone, Debug, PartialEq)]
+pub struct FieldMap {
+    /// Left, lower, right and upper edge of the window, m.
+    pub window: [f64; 4],
+    /// Columns and rows.
+    pub size: [usize; 2],
+    /// Pressure at cell centres, row by row from below, Pa; NaN off the faying faces.
+    pub pressure: Vec<f64>,
+    /// Local conductance, W/(m² K), likewise.
+    pub conductance: Vec<f64>,
+}
+
+/// One ring around one bolt.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct RingRow {
+    /// Inner and outer radius, m.
+    pub radius: [f64; 2],
+    /// Area inside the bolt's own cell, m².
+    pub area: f64,
+    /// Mean pressure, Pa.
+    pub pressure: f64,
+    /// Local conductance, W/(m² K).
+    pub conductance: f64,
+    /// Conductance of the ring, W/K.
+    pub share: f64,
+    /// Sum from the hole to this ring, W/K.
+    pub cumulative: f64,
+}
