@@ -1,1 +1,8 @@
 //! Mathematics that knows no physics.
+
+pub mod banded;
+pub mod interpolation;
+pub mod quadrature;
+pub mod roots;
+pub mod sampling;
+pub mod special;
