@@ -1,1 +1,3 @@
 //! Mathematics that knows no physics.
+
+pub mod block_tridiagonal;
