@@ -1,1 +1,3 @@
 //! Local conductance to the resistances of the joint.
+
+pub mod region;
