@@ -3,7 +3,7 @@
 /// Straight line between neighbouring points; outside the table its end value.
 ///
 /// The points are `(x, y)` with x rising. The caller knows the range of his table: leaving it is
-/// a matter of physics, not of arithmetic. An empty table and a NaN give NaN.
+/// a matter of physics, not of arithmetic. An empty table and a `NaN` give `NaN`.
 ///
 /// Checked: `line_is_reproduced`, `ends_are_held`.
 pub fn linear(points: &[(f64, f64)], x: f64) -> f64 {
@@ -45,6 +45,7 @@ fn between(points: &[(f64, f64)], x: f64, inside: impl Fn([(f64, f64); 2]) -> f6
 }
 
 #[cfg(test)]
+#[expect(clippy::float_cmp, reason = "these results are exact")]
 mod tests {
     use super::*;
 

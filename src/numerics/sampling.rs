@@ -84,7 +84,7 @@ impl Sobol {
 /// h = (n − 1) p,   q = x⌊h⌋ + (h − ⌊h⌋) (x⌊h⌋₊₁ − x⌊h⌋)
 /// ```
 ///
-/// Type 7 of Hyndman & Fan, the default of NumPy. NaN for an empty sample.
+/// Type 7 of Hyndman & Fan, the default of NumPy. `NaN` for an empty sample.
 ///
 /// Checked: `quantile_is_that_of_numpy`.
 pub fn quantile(sorted: &[f64], p: f64) -> f64 {
