@@ -2,13 +2,15 @@
 //!
 //! The files stand in the order of the thought: [`torque`] balances a wrench against pitch and
 //! friction, [`force`] reads a fastener and gives its clamp force at any place of its scatter,
-//! [`strength`] and [`engagement`] say what bolt and threads bear, [`limits`] gathers that into the
-//! largest torque, [`resilience`] tells how soft bolt and plates are, [`losses`] what is left in
+//! [`strength`] and [`engagement`] say what bolt and threads bear, [`mod@limits`] gathers that into the
+//! largest torque, [`resilience`] (and the textbook's [`frusta`])
+//! tells how soft bolt and plates are, [`mod@stack`] applies that to a joint, [`losses`] what is left in
 //! service, and [`cautions`] what the engineer must hear.
 
 pub mod cautions;
 pub mod engagement;
 pub mod force;
+pub mod frusta;
 pub mod limits;
 pub mod losses;
 pub mod resilience;

@@ -20,7 +20,7 @@ const FAR_ABOVE: f64 = 3.0;
 /// A torque this part of the largest one was probably meant in N·m.
 const FAR_BELOW: f64 = 1.0 / 6.0;
 
-/// Ratio of highest to lowest force beyond which no torque wrench should scatter: α_A of an impact wrench.
+/// Ratio of highest to lowest force beyond which no torque wrench should scatter: `α_A` of an impact wrench.
 const WIDE_SCATTER: f64 = 2.5;
 
 /// Friction from which a stainless pair counts as dry.
@@ -151,7 +151,7 @@ fn torque_size(group: &Group<'_>) -> Option<Caution> {
     let largest = largest_torque(fastener, group.supports);
     if let (Tightening::Torque(tightening), Some((largest, _))) = (&fastener.tightening, largest) {
         let (torque, ratio) = (tightening.torque, tightening.torque / largest);
-        if ratio > FAR_ABOVE || ratio < FAR_BELOW {
+        if !(FAR_BELOW..=FAR_ABOVE).contains(&ratio) {
             let side = if ratio > FAR_ABOVE {
                 format!("{ratio:.1} times the largest torque")
             } else {

@@ -25,21 +25,21 @@ const INCH: f64 = 0.0254;
 pub struct ThreadLimits {
     /// Pitch, m.
     pub pitch: f64,
-    /// Largest minor diameter of the nut K_n, m.
+    /// Largest minor diameter of the nut `K_n`, m.
     pub nut_minor_most: f64,
-    /// Largest pitch diameter of the nut E_n, m.
+    /// Largest pitch diameter of the nut `E_n`, m.
     pub nut_pitch_most: f64,
-    /// Smallest pitch diameter of the bolt E_s, m.
+    /// Smallest pitch diameter of the bolt `E_s`, m.
     pub bolt_pitch_least: f64,
-    /// Smallest major diameter of the bolt D_s, m.
+    /// Smallest major diameter of the bolt `D_s`, m.
     pub bolt_major_least: f64,
 }
 
 impl ThreadLimits {
     /// Limits of the usual fit: 6g/6H metric, 2A/2B inch, from the tolerance formulas.
     ///
-    /// Metric, µm with P and d in mm: es = 15 + 11 P; T_d = 180 P^(2/3) − 3.15/√P;
-    /// T_d2 = 90 P^0.4 d^0.1; T_D2 = 1.32 T_d2; T_D1 = 230 P^0.7, below 1 mm 433 P − 190 P^1.22.
+    /// Metric, µm with P and d in mm: es = 15 + 11 P; `T_d = 180 P^(2/3) − 3.15/√P`;
+    /// `T_d2 = 90 P^0.4 d^0.1`; `T_D2 = 1.32 T_d2`; `T_D1 = 230 P^0.7`, below 1 mm 433 P − 190 P^1.22.
     /// Inch, with P, D in inches: T = 0.0015 (D^(1/3) + √D) + 0.015 P^(2/3), allowance 0.3 T, major 0.06 P^(2/3),
     /// nut pitch 1.3 T, nut minor P/4 − 0.4 P², below 1/4 in 0.05 P^(2/3) + 0.03 P/D − 0.002.
     ///

@@ -211,14 +211,14 @@ impl Spread {
         }
     }
 
-    /// Tightening factor α_A = F_max/F_min of a scatter alone, 1: (1 + Γ)/(1 − Γ).
+    /// Tightening factor of a scatter alone, 1: `α_A = F_max/F_min = (1 + Γ)/(1 − Γ)`.
     ///
     /// Source: VDI 2230. Checked: `tightening_factor_and_scatter_agree`.
     pub fn tightening_factor(&self) -> f64 {
         (1.0 + self.scatter) / (1.0 - self.scatter)
     }
 
-    /// The scatter that belongs to a tightening factor: Γ = (α_A − 1)/(α_A + 1).
+    /// The scatter that belongs to a tightening factor: `Γ = (α_A − 1)/(α_A + 1)`.
     pub fn of_tightening_factor(factor: f64) -> Self {
         Self {
             scatter: (factor - 1.0) / (factor + 1.0),

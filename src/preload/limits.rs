@@ -126,7 +126,7 @@ pub fn limits(fastener: &Fastener, supports: &Supports) -> Vec<LimitUse> {
 /// T = (F_max lever(μ_low) + T_run) / (1 + t)
 /// ```
 ///
-/// `F_max` is the smallest of: equivalent stress 0.9 R_p with its torsion, proof load, seat pressures and
+/// `F_max` is the smallest of: equivalent stress 0.9 `R_p` with its torsion, proof load, seat pressures and
 /// stripping; at lowest friction and upper tool tolerance `t`. None when the preload is given or the grade has
 /// no yield strength.
 ///

@@ -94,7 +94,7 @@ pub struct Twist {
 pub struct Target {
     /// 0.2 % yield, Pa.
     pub yield_strength: f64,
-    /// Thread friction μ_t, 1.
+    /// Thread friction `μ_t`, 1.
     pub thread_friction: f64,
     /// Utilisation ν of the yield strength by the equivalent stress, 1; the tables take 0.9.
     pub utilisation: f64,
