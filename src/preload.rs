@@ -9,6 +9,8 @@
 
 pub mod cautions;
 pub mod engagement;
+#[cfg(test)]
+mod fixture;
 pub mod force;
 pub mod frusta;
 pub mod limits;
@@ -22,4 +24,4 @@ pub use cautions::{Group, group_cautions, opened, window_cautions};
 pub use force::{Place, clamp_force, force_band};
 pub use limits::{LimitUse, Supports, largest_torque, limits, strength_use};
 pub use losses::{Losses, force_in_service};
-pub use stack::{Stack, guide_settling, stack};
+pub use stack::{Stack, Strains, guide_settling, stack};

@@ -5,7 +5,7 @@ use std::{f64::consts::PI, fs};
 use ringsum::{
     catalog::Thread,
     preload::{
-        engagement::{PairStrength, ThreadLimits, required_engagement, strip_width},
+        engagement::ThreadLimits,
         frusta::{
             Frustum, MemberFit, MemberShape, TAN_30, TextbookBolt, frustum_stiffness, in_series,
         },
@@ -194,45 +194,6 @@ fn inch_limits_follow_the_tolerance_formulas() {
             assert_close(found / INCH, numbers(row, key)[index], tolerance, key);
         }
     }
-}
-
-#[test]
-fn metric_limits_of_m10() {
-    let limits = ThreadLimits::of(&metric(10.0, 1.5));
-    // ISO 965 limits of M10-6g/6H, from memory, rounded there to preferred numbers: 20 µm.
-    for (found, expected) in [
-        (limits.nut_minor_most, 8.676e-3),
-        (limits.nut_pitch_most, 9.206e-3),
-        (limits.bolt_pitch_least, 8.862e-3),
-        (limits.bolt_major_least, 9.732e-3),
-    ] {
-        assert!((found - expected).abs() < 20e-6, "{found} {expected}");
-    }
-}
-
-#[test]
-fn required_engagement_balances_strip_and_break() {
-    let thread = metric(6.0, 1.0);
-    let strength = PairStrength {
-        bolt_tensile: 700e6,
-        plate_shear: 160e6,
-    };
-    let length = required_engagement(&thread, strength);
-    let strips = length * strip_width(&thread, strength);
-    // The definition: rounding alone.
-    assert_close(strips, thread.stress_area * 700e6, 1e-12, "force");
-    // An A2-70 screw in aluminium asks about the 2 d of the rule of thumb, not 4 d nor 0.5 d.
-    assert!((0.8..2.2).contains(&(length / thread.diameter)), "{length}");
-    // A plate harder than the bolt leaves the bolt's own thread to strip.
-    let hard = required_engagement(
-        &thread,
-        PairStrength {
-            plate_shear: 5e9,
-            ..strength
-        },
-    );
-    let own = thread.stress_area / (0.5 * ThreadLimits::of(&thread).shear_widths().bolt);
-    assert_close(hard, own, 1e-12, "bolt thread");
 }
 
 fn clamped(row: &toml::Value) -> Clamped {
