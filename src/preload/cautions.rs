@@ -20,7 +20,7 @@ const FAR_ABOVE: f64 = 3.0;
 /// A torque this part of the largest one was probably meant in N·m.
 const FAR_BELOW: f64 = 1.0 / 6.0;
 
-/// Ratio of highest to lowest force beyond which no torque wrench should scatter: α_A of an impact wrench.
+/// Ratio of highest to lowest force beyond which no torque wrench should scatter: `α_A` of an impact wrench.
 const WIDE_SCATTER: f64 = 2.5;
 
 /// Friction from which a stainless pair counts as dry.
@@ -90,19 +90,17 @@ pub fn window_cautions(group: &Group<'_>) -> Vec<Caution> {
 fn over_strength(group: &Group<'_>) -> Vec<Caution> {
     let Group { name, fastener, .. } = group;
     let mut found = Vec::new();
-    let Some([nominal, high]) = strength_use(fastener) else {
-        found.push(caution(
+    let used = strength_use(fastener);
+    match used {
+        None => found.push(caution(
             "preload/no-yield-strength",
             format!(
                 "{name}: grade {} has no yield strength here, so neither strength use nor largest torque can be \
                  given; take it from the part specification.",
                 fastener.grade.name
             ),
-        ));
-        return found;
-    };
-    if high > 1.0 {
-        found.push(caution(
+        )),
+        Some([nominal, high]) if high > 1.0 => found.push(caution(
             "preload/over-yield",
             format!(
                 "{name}: at the highest force the combined stress is {:.0} % of yield ({:.0} % at nominal); the bolt \
@@ -110,16 +108,16 @@ fn over_strength(group: &Group<'_>) -> Vec<Caution> {
                 100.0 * high,
                 100.0 * nominal
             ),
-        ));
-    } else if high > UTILISATION {
-        found.push(caution(
+        )),
+        Some([_, high]) if high > UTILISATION => found.push(caution(
             "preload/over-90-percent",
             format!(
                 "{name}: at the highest force the combined stress is {:.0} % of yield; more than 90 % needs control \
                  by angle or yield.",
                 100.0 * high
             ),
-        ));
+        )),
+        Some(_) => {}
     }
     let failed: Vec<LimitUse> = limits(fastener, group.supports)
         .into_iter()
@@ -134,12 +132,13 @@ fn over_strength(group: &Group<'_>) -> Vec<Caution> {
             ),
         ));
     }
-    if !failed.is_empty() {
+    // Between 90 and 100 % of yield the caution above says enough.
+    if let Some(worst) = failed.iter().find(|limit| limit.used > 1.0) {
         found.push(caution(
             "preload/never-for-conductance",
             format!(
                 "{name}: {} does not hold; never buy conductance with torque beyond what bolt and plate bear.",
-                failed[0].name
+                worst.name
             ),
         ));
     }
@@ -151,7 +150,7 @@ fn torque_size(group: &Group<'_>) -> Option<Caution> {
     let largest = largest_torque(fastener, group.supports);
     if let (Tightening::Torque(tightening), Some((largest, _))) = (&fastener.tightening, largest) {
         let (torque, ratio) = (tightening.torque, tightening.torque / largest);
-        if ratio > FAR_ABOVE || ratio < FAR_BELOW {
+        if !(FAR_BELOW..=FAR_ABOVE).contains(&ratio) {
             let side = if ratio > FAR_ABOVE {
                 format!("{ratio:.1} times the largest torque")
             } else {
@@ -341,3 +340,6 @@ fn dry(fastener: &Fastener) -> bool {
 fn caution(code: &'static str, text: String) -> Caution {
     Caution { code, text }
 }
+
+#[cfg(test)]
+mod tests;

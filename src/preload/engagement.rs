@@ -25,26 +25,26 @@ const INCH: f64 = 0.0254;
 pub struct ThreadLimits {
     /// Pitch, m.
     pub pitch: f64,
-    /// Largest minor diameter of the nut K_n, m.
+    /// Largest minor diameter of the nut `K_n`, m.
     pub nut_minor_most: f64,
-    /// Largest pitch diameter of the nut E_n, m.
+    /// Largest pitch diameter of the nut `E_n`, m.
     pub nut_pitch_most: f64,
-    /// Smallest pitch diameter of the bolt E_s, m.
+    /// Smallest pitch diameter of the bolt `E_s`, m.
     pub bolt_pitch_least: f64,
-    /// Smallest major diameter of the bolt D_s, m.
+    /// Smallest major diameter of the bolt `D_s`, m.
     pub bolt_major_least: f64,
 }
 
 impl ThreadLimits {
     /// Limits of the usual fit: 6g/6H metric, 2A/2B inch, from the tolerance formulas.
     ///
-    /// Metric, µm with P and d in mm: es = 15 + 11 P; T_d = 180 P^(2/3) − 3.15/√P;
-    /// T_d2 = 90 P^0.4 d^0.1; T_D2 = 1.32 T_d2; T_D1 = 230 P^0.7, below 1 mm 433 P − 190 P^1.22.
+    /// Metric, µm with P and d in mm: es = 15 + 11 P; `T_d = 180 P^(2/3) − 3.15/√P`;
+    /// `T_d2 = 90 P^0.4 d^0.1`; `T_D2 = 1.32 T_d2`; `T_D1 = 230 P^0.7`, below 1 mm 433 P − 190 P^1.22.
     /// Inch, with P, D in inches: T = 0.0015 (D^(1/3) + √D) + 0.015 P^(2/3), allowance 0.3 T, major 0.06 P^(2/3),
     /// nut pitch 1.3 T, nut minor P/4 − 0.4 P², below 1/4 in 0.05 P^(2/3) + 0.03 P/D − 0.002.
     ///
     /// Valid: engaged length about one diameter. Source: ISO 965-1 and ASME B1.1 tolerance formulas, from memory.
-    /// Checked: `inch_limits_follow_the_tolerance_formulas` (0.1 % of twenty limits), `metric_limits_of_m10`.
+    /// Checked: `inch_limits_follow_the_tolerance_formulas`, `metric_limits_of_m10`.
     pub fn of(thread: &Thread) -> Self {
         let sizes = if thread.inch {
             inch_tolerances(thread)
@@ -233,4 +233,75 @@ pub fn engagement_check(fastener: &Fastener, part: &ThreadedPart) -> Option<Enga
             )
         }),
     })
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::preload::fixture::{m6, metric};
+
+    #[test]
+    fn metric_limits_of_m10() {
+        let limits = ThreadLimits::of(&metric(10e-3, 1.5e-3));
+        // ISO 965 limits of M10-6g/6H, from memory, rounded there to preferred numbers: 20 µm.
+        for (found, expected) in [
+            (limits.nut_minor_most, 8.676e-3),
+            (limits.nut_pitch_most, 9.206e-3),
+            (limits.bolt_pitch_least, 8.862e-3),
+            (limits.bolt_major_least, 9.732e-3),
+        ] {
+            assert!((found - expected).abs() < 20e-6, "{found} {expected}");
+        }
+    }
+
+    #[test]
+    fn required_engagement_balances_strip_and_break() {
+        let thread = metric(6e-3, 1e-3);
+        let strength = PairStrength {
+            bolt_tensile: 700e6,
+            plate_shear: 160e6,
+        };
+        let length = required_engagement(&thread, strength);
+        let strips = length * strip_width(&thread, strength);
+        // The definition: rounding alone.
+        assert!((strips / (thread.stress_area * 700e6) - 1.0).abs() < 1e-12);
+        // An A2-70 screw in aluminium asks about the 2 d of the rule of thumb, not 4 d nor 0.5 d.
+        assert!((0.8..2.2).contains(&(length / thread.diameter)), "{length}");
+        // A plate harder than the bolt leaves the bolt's own thread to strip.
+        let hard = required_engagement(
+            &thread,
+            PairStrength {
+                plate_shear: 5e9,
+                ..strength
+            },
+        );
+        let own = thread.stress_area / (0.5 * ThreadLimits::of(&thread).shear_widths().bolt);
+        assert!((hard / own - 1.0).abs() < 1e-12, "{hard} {own}");
+    }
+
+    #[test]
+    fn soft_plates_ask_for_longer_threads() {
+        let [steel, brass, light] = ["steel", "brass", "aluminium"].map(rule_of_thumb);
+        assert!(steel < brass && brass < light);
+        assert!((rule_of_thumb("unobtainium") - light).abs() < f64::EPSILON);
+    }
+
+    #[test]
+    fn insert_needs_one_diameter_where_a_tapped_light_alloy_needs_two() {
+        let part = ThreadedPart {
+            family: "aluminium".into(),
+            shear_strength: None,
+        };
+        let mut fastener = m6();
+        assert!(engagement_check(&fastener, &part).is_none());
+        fastener.engagement = Engagement::Tapped { length: 9e-3 };
+        assert!(engagement_check(&fastener, &part).unwrap().is_short());
+        fastener.engagement = Engagement::Insert { length: 9e-3 };
+        assert!(!engagement_check(&fastener, &part).unwrap().is_short());
+        let weak = ThreadedPart {
+            shear_strength: Some(20e6),
+            ..part
+        };
+        assert!(engagement_check(&fastener, &weak).unwrap().is_short());
+    }
 }

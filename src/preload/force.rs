@@ -211,18 +211,162 @@ impl Spread {
         }
     }
 
-    /// Tightening factor α_A = F_max/F_min of a scatter alone, 1: (1 + Γ)/(1 − Γ).
+    /// Tightening factor of a scatter alone, 1: `α_A = F_max/F_min = (1 + Γ)/(1 − Γ)`.
     ///
     /// Source: VDI 2230. Checked: `tightening_factor_and_scatter_agree`.
     pub fn tightening_factor(&self) -> f64 {
         (1.0 + self.scatter) / (1.0 - self.scatter)
     }
 
-    /// The scatter that belongs to a tightening factor: Γ = (α_A − 1)/(α_A + 1).
+    /// The scatter that belongs to a tightening factor: `Γ = (α_A − 1)/(α_A + 1)`.
     pub fn of_tightening_factor(factor: f64) -> Self {
         Self {
             scatter: (factor - 1.0) / (factor + 1.0),
             ..Self::default()
+        }
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use proptest::prelude::*;
+
+    use super::*;
+    use crate::preload::fixture::{m6, m6_with};
+
+    const POUND: f64 = 4.448_221_615;
+    const INCH: f64 = 0.0254;
+
+    fn nut_factor_bolt(scatter: Option<f64>) -> Fastener {
+        let mut bolt = m6_with(|tightening| {
+            tightening.torque = 60.0 * POUND * INCH;
+            tightening.friction = Friction::NutFactor(Bounds::exact(0.20));
+            tightening.scatter = scatter;
+        });
+        bolt.thread.diameter = 0.25 * INCH;
+        bolt
+    }
+
+    #[test]
+    fn worked_example_of_nasa_practice() {
+        // 1/4-28 at 60 lbf in with K 0.20; the worked numbers are exact, 0.1 % covers their print.
+        let close = |found: f64, pounds: f64| {
+            assert!(
+                (found / POUND / pounds - 1.0).abs() < 1e-3,
+                "{found} {pounds}"
+            );
+        };
+        let nominal = force_band(&nut_factor_bolt(None)).nominal;
+        close(nominal, 1200.0);
+        for (scatter, low, high) in [(0.25, 900.0, 1500.0), (0.35, 780.0, 1620.0)] {
+            let band = force_band(&nut_factor_bolt(Some(scatter)));
+            close(band.low, low);
+            close(band.nominal, 1200.0);
+            close(band.high, high);
+        }
+        let spread = Spread {
+            scatter: 0.25,
+            tolerance: 0.05,
+            relaxation: 0.05,
+        };
+        close(spread.about(nominal).high, 1575.0);
+        close(spread.about(nominal).low, 812.3);
+    }
+
+    #[test]
+    fn tool_tolerance_and_friction_combine_as_products() {
+        let band = force_band(&m6());
+        let exact = force_band(&m6_with(|tightening| tightening.tolerance = 0.0));
+        assert!((band.high / exact.high - 1.05).abs() < 1e-12);
+        assert!((band.low / exact.low - 0.95).abs() < 1e-12);
+        assert!((band.nominal - exact.nominal).abs() < 1e-9);
+    }
+
+    #[test]
+    fn given_preload_keeps_its_bounds() {
+        let bounds = Bounds {
+            low: 4e3,
+            nominal: 5e3,
+            high: 7e3,
+        };
+        let mut bolt = m6();
+        bolt.tightening = Tightening::Preload(bounds);
+        assert_eq!(force_band(&bolt), bounds);
+        // Torsion by the thread friction of class B: F (P/2π + 0.577 · 0.12 · 5.35 mm).
+        let lever = 0.159_155e-3 + 0.577_350 * 0.12 * 5.350_481e-3;
+        let twist = torsion(&bolt, Place::NOMINAL);
+        assert!((twist / (5e3 * lever) - 1.0).abs() < 1e-6, "{twist}");
+    }
+
+    #[test]
+    fn torque_at_or_below_running_torque_clamps_nothing() {
+        for running in [7.0, 9.0] {
+            let bolt = m6_with(|tightening| {
+                tightening.running = running;
+                tightening.tolerance = 0.0;
+            });
+            assert!(force_band(&bolt).high.abs() < f64::EPSILON);
+        }
+    }
+
+    #[test]
+    fn running_torque_is_lost_to_the_force_but_twists_the_bolt() {
+        let free = m6();
+        let locked = m6_with(|tightening| tightening.running = 1.0);
+        let ratio = force_band(&locked).nominal / force_band(&free).nominal;
+        assert!((ratio - 6.0 / 7.0).abs() < 1e-12);
+        let [clamps, twists] = [clamp_force, torsion].map(|of| of(&locked, Place::NOMINAL));
+        let lever = torsion(&free, Place::NOMINAL) / clamp_force(&free, Place::NOMINAL);
+        assert!((twists - (clamps * lever + 1.0)).abs() < 1e-9);
+    }
+
+    #[test]
+    fn cone_seat_clamps_less() {
+        let mut cone = m6();
+        cone.conical_seat = true;
+        let (flat, cone) = (force_band(&m6()).nominal, force_band(&cone).nominal);
+        // Levers by hand: 0.9943 mm flat, 1.1867 mm with the head at r/sin 45°.
+        assert!((cone / flat - 0.837_9).abs() < 1e-3, "{}", cone / flat);
+    }
+
+    #[test]
+    fn method_scatter_keeps_the_balance_with_the_set_torque() {
+        let bolt = m6_with(|tightening| tightening.scatter = Some(0.3));
+        let Tightening::Torque(tightening) = &bolt.tightening else {
+            unreachable!("the fixture is tightened by torque");
+        };
+        for place in [-1.0, 0.0, 1.0].map(|preload| Place {
+            preload,
+            ..Place::NOMINAL
+        }) {
+            let balance = balance(&bolt, tightening, place);
+            let torque = balance.torque(clamp_force(&bolt, place));
+            assert!((torque - 7.0).abs() < 1e-12);
+            assert!(balance.levers.thread < balance.levers.total);
+        }
+    }
+
+    proptest! {
+        #[test]
+        fn more_friction_clamps_less(a in -1.0..1.0f64, b in -1.0..1.0f64, torque in 0.5..20.0f64) {
+            let bolt = m6_with(|tightening| tightening.torque = torque);
+            let at = |friction| clamp_force(&bolt, Place { friction, ..Place::NOMINAL });
+            prop_assert!((at(a) - at(b)) * (a - b) <= 0.0);
+        }
+
+        #[test]
+        fn every_place_lies_within_the_band(
+            friction in -1.0..1.0f64, torque in -1.0..1.0f64, preload in -1.0..1.0f64,
+            running in 0.0..9.0f64, scatter in proptest::option::of(0.0..0.6f64),
+        ) {
+            let bolt = m6_with(|tightening| {
+                tightening.running = running;
+                tightening.scatter = scatter;
+            });
+            let band = force_band(&bolt);
+            let force = clamp_force(&bolt, Place { friction, torque, preload });
+            prop_assert!(band.low <= band.nominal && band.nominal <= band.high);
+            prop_assert!(band.low * (1.0 - 1e-12) <= force && force <= band.high * (1.0 + 1e-12));
         }
     }
 }

@@ -126,9 +126,9 @@ pub fn limits(fastener: &Fastener, supports: &Supports) -> Vec<LimitUse> {
 /// T = (F_max lever(μ_low) + T_run) / (1 + t)
 /// ```
 ///
-/// `F_max` is the smallest of: equivalent stress 0.9 R_p with its torsion, proof load, seat pressures and
-/// stripping; at lowest friction and upper tool tolerance `t`. None when the preload is given or the grade has
-/// no yield strength.
+/// `F_max` is the smallest of: equivalent stress 0.9 `R_p` with its torsion, proof load, seat pressures and
+/// stripping; at lowest friction and upper tool tolerance `t`. None when the preload is given, the grade has
+/// no yield strength, or the running torque alone exceeds the stress.
 ///
 /// Valid: an estimate from minimum strengths, no torque card; external load, fatigue and slip are not in it.
 /// Source: VDI 2230-1 (90 % of yield), the limits by their own functions.
@@ -147,7 +147,7 @@ pub fn largest_torque(fastener: &Fastener, supports: &Supports) -> Option<(f64, 
             running: balance.running,
         },
         UTILISATION * yield_strength,
-    );
+    )?;
     let (force, name) = force_limits(fastener, supports).into_iter().fold(
         (by_stress, STRESS),
         |(force, name), (other, most)| {
@@ -207,5 +207,120 @@ fn worst(fastener: &Fastener) -> Place {
             friction: 1.0,
             ..Place::HIGHEST_FORCE
         },
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::{
+        joint::{Bounds, Friction},
+        preload::fixture::{aluminium, datum, m6, m6_with},
+    };
+
+    fn supports() -> Supports {
+        Supports::of(&aluminium(), &aluminium())
+    }
+
+    fn at_torque(fastener: &Fastener, torque: f64) -> Fastener {
+        let mut fastener = fastener.clone();
+        if let Tightening::Torque(tightening) = &mut fastener.tightening {
+            tightening.torque = torque;
+        }
+        fastener
+    }
+
+    #[test]
+    fn largest_torque_stands_exactly_at_its_limit() {
+        let nut_factor = Friction::NutFactor(Bounds {
+            low: 0.12,
+            nominal: 0.16,
+            high: 0.2,
+        });
+        let mut soft = supports();
+        soft.head_limit = Some(150e6);
+        let mut tapped = m6();
+        tapped.engagement = Engagement::Tapped { length: 4e-3 };
+        tapped.nut_seat = None;
+        let mut weak = supports();
+        weak.far.shear_strength = Some(60e6);
+        let mut low_proof = m6();
+        low_proof.grade.proof = Some(datum(300e6));
+        let mut soft_nut = supports();
+        soft_nut.nut_limit = Some(120e6);
+        for (fastener, supports, ends) in [
+            (m6(), supports(), STRESS),
+            (m6_with(|t| t.running = 1.5), supports(), STRESS),
+            (m6_with(|t| t.scatter = Some(0.3)), supports(), STRESS),
+            (m6_with(|t| t.friction = nut_factor), supports(), STRESS),
+            (low_proof, supports(), PROOF),
+            (m6(), soft, HEAD_PRESSURE),
+            (m6(), soft_nut, NUT_PRESSURE),
+            (tapped, weak, STRIPPING),
+        ] {
+            let (torque, name) = largest_torque(&fastener, &supports).unwrap();
+            assert_eq!(name, ends);
+            let found = limits(&at_torque(&fastener, torque), &supports);
+            assert!(found.iter().all(|limit| limit.passes), "{found:?}");
+            let ending = found.iter().find(|limit| limit.name == name).unwrap();
+            // The inverse of the same formulas: rounding alone.
+            assert!(
+                (ending.used / ending.allowed - 1.0).abs() < 1e-9,
+                "{found:?}"
+            );
+            let above = limits(&at_torque(&fastener, 1.001 * torque), &supports);
+            assert!(above.iter().any(|limit| !limit.passes));
+        }
+    }
+
+    #[test]
+    fn largest_torque_of_an_m6_is_the_vdi_torque_at_lowest_friction_less_the_tolerance() {
+        // VDI 2230-1:2001 formula, coarse M6 8.8 at friction 0.08: 7.66 N·m, three digits.
+        let (torque, _) = largest_torque(&m6(), &supports()).unwrap();
+        assert!((torque * 1.05 / 7.66 - 1.0).abs() < 0.002, "{torque}");
+    }
+
+    #[test]
+    fn nothing_is_promised_without_torque_or_yield_strength() {
+        let mut given = m6();
+        given.tightening = Tightening::Preload(Bounds::exact(5e3));
+        assert_eq!(largest_torque(&given, &supports()), None);
+        let mut unknown = m6();
+        unknown.grade.yield_strength = None;
+        assert_eq!(largest_torque(&unknown, &supports()), None);
+        assert_eq!(strength_use(&unknown), None);
+        assert!(
+            limits(&unknown, &supports())
+                .iter()
+                .any(|limit| limit.name == PROOF)
+        );
+    }
+
+    #[test]
+    fn running_torque_beyond_the_bolt_leaves_no_torque() {
+        let stuck = m6_with(|tightening| tightening.running = 60.0);
+        assert_eq!(largest_torque(&stuck, &supports()), None);
+        assert!(!limits(&stuck, &supports())[0].passes);
+    }
+
+    #[test]
+    fn torsion_costs_a_bolt_a_seventh_of_its_strength() {
+        let [nominal, high] = strength_use(&m6()).unwrap();
+        let tension = force_band(&m6()).nominal / (20.12e-6 * 640e6);
+        // At friction 0.12 the VDI 2230-1:2001 formula gives M6: 0.9 · 640 MPa · 20.12 mm² / 10 150 N = 1.142.
+        assert!(
+            (nominal / tension - 1.142).abs() < 0.005,
+            "{}",
+            nominal / tension
+        );
+        assert!(nominal < high);
+    }
+
+    #[test]
+    fn given_preload_is_judged_at_the_highest_friction_of_its_class() {
+        let mut given = m6();
+        given.tightening = Tightening::Preload(Bounds::exact(7e3));
+        let [nominal, high] = strength_use(&given).unwrap();
+        assert!(nominal < high);
     }
 }

@@ -64,7 +64,7 @@ pub struct Contacts {
 }
 
 impl Settling {
-    /// Settling of a whole stack f_Z, m: one thread, the seats and the inner interfaces.
+    /// Settling of a whole stack `f_Z`, m: one thread, the seats and the inner interfaces.
     ///
     /// Checked: `two_plates_with_a_nut_settle_11_micrometres`.
     pub fn of_stack(&self, contacts: Contacts) -> f64 {
@@ -77,14 +77,14 @@ impl Settling {
 /// Compliance of bolt and plates, m/N.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Compliance {
-    /// Bolt δ_S.
+    /// Bolt `δ_S`.
     pub bolt: f64,
-    /// Clamped parts δ_P.
+    /// Clamped parts `δ_P`.
     pub plates: f64,
 }
 
 impl Compliance {
-    /// Force lost by settling F_Z, N.
+    /// Force lost by settling `F_Z`, N.
     ///
     /// ```text
     /// F_Z = f_Z / (δ_S + δ_P)
@@ -114,7 +114,7 @@ impl Compliance {
         growth / (self.bolt + self.plates)
     }
 
-    /// Load factor Φ of a load that enters under head and nut, 1: δ_P/(δ_S + δ_P).
+    /// Load factor Φ of a load that enters under head and nut, 1: `δ_P/(δ_S + δ_P)`.
     ///
     /// Source: VDI 2230-1. Checked: `example_a_of_the_resilience_chain`.
     pub fn load_factor(&self) -> f64 {
@@ -140,7 +140,7 @@ impl Part {
 /// What parts the service force from the assembly force.
 #[derive(Clone, Copy, Debug, Default, PartialEq)]
 pub struct Losses {
-    /// Force lost by settling F_Z, N.
+    /// Force lost by settling `F_Z`, N.
     pub settling: f64,
     /// Short-term relaxation as a fraction of the assembly force.
     pub relaxation: f64,

@@ -4,9 +4,6 @@ use std::f64::consts::PI;
 
 use crate::catalog::Thread;
 
-/// tan 30°, the half-angle of the textbook frusta.
-pub const TAN_30: f64 = 0.577_350_269_189_625_8;
-
 /// Form of the bolt head, which adds a length to the bolt.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub enum HeadForm {
@@ -61,7 +58,7 @@ pub struct BoltCompliance {
 }
 
 impl BoltCompliance {
-    /// Sum of the parts δ_S, m/N.
+    /// Sum of the parts `δ_S`, m/N.
     pub fn total(&self) -> f64 {
         self.head + self.shank + self.free_thread + self.engaged + self.far
     }
@@ -119,13 +116,13 @@ impl ConeKind {
 /// The clamped parts as the substitute cone sees them.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Clamped {
-    /// Outer diameter of the seat d_w, m.
+    /// Outer diameter of the seat `d_w`, m.
     pub seat_diameter: f64,
-    /// Hole diameter d_h, m.
+    /// Hole diameter `d_h`, m.
     pub hole_diameter: f64,
-    /// Grip l_K, m.
+    /// Grip `l_K`, m.
     pub grip: f64,
-    /// Outer diameter of the parts D_A, m; not below the seat.
+    /// Outer diameter of the parts `D_A`, m; not below the seat.
     pub outer_diameter: f64,
     /// Kind of joint.
     pub kind: ConeKind,
@@ -164,16 +161,16 @@ impl Clamped {
         (self.seat_diameter + 2.0 * tangent * from_seat).min(self.outer_diameter)
     }
 
-    /// Compliance of parts of one material times its Young's modulus, E δ_P, 1/m.
+    /// Compliance of parts of one material times its Young's modulus, `E δ_P`, 1/m.
     ///
     /// ```text
     /// cone:            2/(w d_h tan φ) ln[(d_w+d_h)(D−d_h) / ((d_w−d_h)(D+d_h))] / π,   D = min(D_A, d_w + w l_K tan φ)
     /// then the sleeve: 4/(D_A² − d_h²) [ l_K − (D_A − d_w)/(w tan φ) ] / π,   where D_A < d_w + w l_K tan φ
     /// ```
     ///
-    /// The tangent is an argument so that other rules can use the same body. Divide by E for δ_P.
+    /// The tangent is an argument so that other rules can use the same body. Divide by E for `δ_P`.
     ///
-    /// Valid: d_h < d_w ≤ D_A. Source: VDI 2230-1, from memory.
+    /// Valid: `d_h < d_w ≤ D_A`. Source: VDI 2230-1, from memory.
     /// Checked: `cone_closed_form_equals_the_integral`, `cone_of_30_degrees_is_two_frusta`, examples A, A′, B.
     pub fn stretch(&self, tangent: f64) -> f64 {
         let (seat, hole) = (self.seat_diameter, self.hole_diameter);
@@ -241,7 +238,7 @@ pub fn stack_compliance(clamped: &Clamped, layers: &[StackLayer]) -> f64 {
     sum
 }
 
-/// ∫ dz/A over a hollow frustum, 1/m: 4/π ∫ dz/(D² − d_h²) with D linear in z.
+/// ∫ dz/A over a hollow frustum, 1/m: `4/π ∫ dz/(D² − d_h²)` with D linear in z.
 fn frustum_stretch(diameters: [f64; 2], hole: f64, length: f64) -> f64 {
     let [first, last] = diameters;
     let rise = (last - first).abs();
@@ -251,79 +248,4 @@ fn frustum_stretch(diameters: [f64; 2], hole: f64, length: f64) -> f64 {
     let (small, large) = (first.min(last), first.max(last));
     let log = ((small + hole) * (large - hole) / ((small - hole) * (large + hole))).ln();
     2.0 * length / (PI * hole * rise) * log
-}
-
-/// A frustum of the textbook pressure cone.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Frustum {
-    /// Smaller diameter D, m.
-    pub diameter: f64,
-    /// Thickness t, m.
-    pub thickness: f64,
-    /// Young's modulus, Pa.
-    pub youngs_modulus: f64,
-}
-
-/// Stiffness of a frustum of 30° half-angle around a bolt, N/m.
-///
-/// ```text
-/// k = 0.5774 π E d / ln[ (1.155 t + D − d)(D + d) / ((1.155 t + D + d)(D − d)) ]
-/// ```
-///
-/// Source: Shigley's Mechanical Engineering Design, chapter 8.
-/// Checked: `frusta_of_shigley_8_22_and_8_24`.
-pub fn frustum_stiffness(frustum: &Frustum, bolt_diameter: f64) -> f64 {
-    let (large, hole) = (frustum.diameter, bolt_diameter);
-    let opened = 2.0 * TAN_30 * frustum.thickness + large;
-    TAN_30 * PI * frustum.youngs_modulus * hole
-        / ((opened - hole) * (large + hole) / ((opened + hole) * (large - hole))).ln()
-}
-
-/// Stiffness of members in series, N/m: 1/k = Σ 1/kᵢ.
-pub fn in_series(stiffnesses: impl IntoIterator<Item = f64>) -> f64 {
-    1.0 / stiffnesses.into_iter().map(f64::recip).sum::<f64>()
-}
-
-/// A fit of member stiffness to finite elements.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct MemberFit {
-    /// Coefficient A, 1.
-    pub scale: f64,
-    /// Coefficient B, 1.
-    pub exponent: f64,
-}
-
-impl MemberFit {
-    /// Steel.
-    pub const STEEL: Self = Self::new(0.78715, 0.62873);
-    /// Grey cast iron.
-    pub const GREY_IRON: Self = Self::new(0.77871, 0.61616);
-    /// Aluminium, from memory.
-    pub const ALUMINIUM: Self = Self::new(0.79670, 0.63816);
-    /// Copper, from memory.
-    pub const COPPER: Self = Self::new(0.79568, 0.63553);
-    /// Any metal, from memory.
-    pub const GENERAL: Self = Self::new(0.78952, 0.62914);
-
-    const fn new(scale: f64, exponent: f64) -> Self {
-        Self { scale, exponent }
-    }
-
-    /// Member stiffness per Young's modulus, k/E = A d exp(B d/l), m.
-    ///
-    /// Valid: one material, washer face 1.5 d.
-    /// Source: Wileman, Choudhury & Green 1991, as printed in Shigley, chapter 8.
-    /// Checked: `member_fit_of_wileman`.
-    pub fn length(&self, bolt: &MemberShape) -> f64 {
-        self.scale * bolt.diameter * (self.exponent * bolt.diameter / bolt.grip).exp()
-    }
-}
-
-/// What the member fit asks of a joint.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct MemberShape {
-    /// Bolt diameter, m.
-    pub diameter: f64,
-    /// Grip, m.
-    pub grip: f64,
 }

@@ -66,7 +66,7 @@ pub fn von_mises(thread: &Thread, load: Load, rule: TorsionRule) -> f64 {
 /// ```
 ///
 /// `g` is the thread lever and `σ` the stress allowed. Zero when the running torque alone exceeds it.
-pub fn force_at_stress(thread: &Thread, twist: Twist, stress: f64) -> f64 {
+pub fn force_at_stress(thread: &Thread, twist: Twist, stress: f64) -> Option<f64> {
     let area = core_area(thread);
     let resistance = TorsionRule::Plastic.resistance(thread.stress_diameter);
     let slope = twist.lever / resistance;
@@ -74,10 +74,7 @@ pub fn force_at_stress(thread: &Thread, twist: Twist, stress: f64) -> f64 {
     let square = 1.0 / (area * area) + 3.0 * slope * slope;
     let half = 3.0 * slope * start;
     let rest = stress * stress - 3.0 * start * start;
-    if rest <= 0.0 {
-        return 0.0;
-    }
-    ((half * half + square * rest).sqrt() - half) / square
+    (rest > 0.0).then(|| ((half * half + square * rest).sqrt() - half) / square)
 }
 
 /// Torsion as it grows with force.
@@ -94,7 +91,7 @@ pub struct Twist {
 pub struct Target {
     /// 0.2 % yield, Pa.
     pub yield_strength: f64,
-    /// Thread friction μ_t, 1.
+    /// Thread friction `μ_t`, 1.
     pub thread_friction: f64,
     /// Utilisation ν of the yield strength by the equivalent stress, 1; the tables take 0.9.
     pub utilisation: f64,

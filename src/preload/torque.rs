@@ -15,9 +15,9 @@ pub const CONE_SEAT: f64 = FRAC_1_SQRT_2;
 /// Friction of one screw.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Coefficients {
-    /// μ_t between the threads, 1.
+    /// `μ_t` between the threads, 1.
     pub thread: f64,
-    /// μ_h under the turned head or nut, 1.
+    /// `μ_h` under the turned head or nut, 1.
     pub head: f64,
 }
 
@@ -28,7 +28,7 @@ pub struct Turning {
     pub pitch: f64,
     /// Pitch diameter d₂, m.
     pub pitch_diameter: f64,
-    /// Radius at which head friction acts, D_m/2, the wedge of a cone seat included, m.
+    /// Radius at which head friction acts, `D_m/2`, the wedge of a cone seat included, m.
     pub friction_radius: f64,
 }
 
@@ -79,7 +79,7 @@ impl Turning {
     /// ```
     ///
     /// Zero when the lever is shorter than the pitch alone: such a nut factor belongs to no friction.
-    /// Valid: the choice μ_t = μ_h is this house's; a nut factor does not say where the friction is.
+    /// Valid: the choice `μ_t = μ_h` is this house's; a nut factor does not say where the friction is.
     pub fn equal_friction(&self, lever: f64) -> f64 {
         let arm = FLANK * self.pitch_diameter + self.friction_radius;
         ((lever - self.pitch / TAU) / arm).max(0.0)
@@ -133,7 +133,7 @@ impl ShortForm {
 pub struct Balance {
     /// Torque per force.
     pub levers: Levers,
-    /// Running torque T_run, N m.
+    /// Running torque `T_run`, N m.
     pub running: f64,
 }
 
@@ -164,7 +164,7 @@ impl Balance {
     }
 }
 
-/// Mean friction diameter of a flat annulus by equal radii, m: D_m = (D_o + D_i)/2.
+/// Mean friction diameter of a flat annulus by equal radii, m: `D_m = (D_o + D_i)/2`.
 ///
 /// Source: VDI 2230-1:2001, the mean its tables use.
 pub fn mean_friction_diameter(annulus: &Seat) -> f64 {
