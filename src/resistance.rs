@@ -1,3 +1,4 @@
 //! Local conductance to the resistances of the joint.
 
+pub mod network;
 pub mod region;
