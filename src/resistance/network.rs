@@ -163,7 +163,11 @@ impl Rings {
     /// The columns of one ring: the heated share of an isothermal zone apart, given flux smeared.
     fn mix(&self, ring: usize, plates: &Plates) -> Mix {
         let (heated, area) = (self.source_area[ring], self.plate_area[0][ring]);
-        let share = if area > 0.0 { (heated / area).min(1.0) } else { 0.0 };
+        let share = if area > 0.0 {
+            (heated / area).min(1.0)
+        } else {
+            0.0
+        };
         let plain = |flux| plates.column(Heated::Flux(flux));
         match plates.inlet {
             Inlet::Flux(flux) => Mix {
@@ -267,13 +271,12 @@ impl Rings {
             let mut through = [0.0; 2];
             for (index, (column, _)) in mix.columns.iter().enumerate() {
                 through[index] = couplings[ring][index]
-                    * (column.upper * t1 - column.lower * t2
-                        - (column.upper - 1.0)
-                        - column.fixed);
+                    * (column.upper * t1 - column.lower * t2 - (column.upper - 1.0) - column.fixed);
             }
             let crossing = through[0] + through[1];
-            let touching: f64 =
-                self.patch_area[self.first_patch[ring]..self.first_patch[ring + 1]].iter().sum();
+            let touching: f64 = self.patch_area[self.first_patch[ring]..self.first_patch[ring + 1]]
+                .iter()
+                .sum();
             flow.plate[0] += t1 * area[0];
             flow.plate[1] += t2 * area[1];
             // q_t and q_b times area, W.
@@ -289,7 +292,9 @@ impl Rings {
                 let share = self.source_area[ring] / area[0];
                 if isothermal {
                     flow.source += self.source_area[ring];
-                    flow.hottest = flow.hottest.max(if share > 0.0 { 1.0 } else { face / area[0] });
+                    flow.hottest = flow
+                        .hottest
+                        .max(if share > 0.0 { 1.0 } else { face / area[0] });
                 } else {
                     flow.source += face * share;
                     flow.hottest = flow.hottest.max(face / area[0]);
@@ -301,8 +306,8 @@ impl Rings {
                 } else {
                     mix.flux * touching
                 };
-                let outlet_flux = back_flux * touching
-                    + back * (t2 * touching - crossing * depth[1] / 6.0);
+                let outlet_flux =
+                    back_flux * touching + back * (t2 * touching - crossing * depth[1] / 6.0);
                 flow.interface += (t1 - t2) * touching
                     - crossing * (depth[0] + depth[1]) / 3.0
                     - inlet_flux * depth[0] / 6.0
@@ -368,8 +373,7 @@ pub fn edges(hole_radius: f64, contact_radius: f64, rim_radius: f64, rings: usiz
         let s = ring as f64 / inside as f64;
         a + (c - a) * (1.0 - (1.0 - s).powf(1.5))
     });
-    let growing =
-        (1..=outside).map(|ring| c * (rim_radius / c).powf(ring as f64 / outside as f64));
+    let growing = (1..=outside).map(|ring| c * (rim_radius / c).powf(ring as f64 / outside as f64));
     clustered.chain(growing).collect()
 }
 
