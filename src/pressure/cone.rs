@@ -155,7 +155,9 @@ impl Pair {
         let mut outside = Vec::new();
         let mut check = |ratio: f64, [low, high]: [f64; 2], what: &str| {
             if !(low * (1.0 - ROUNDING) <= ratio && ratio <= high * (1.0 + ROUNDING)) {
-                outside.push(format!("{what} is {ratio:.3} (checked {low:.3} to {high:.3})"));
+                outside.push(format!(
+                    "{what} is {ratio:.3} (checked {low:.3} to {high:.3})"
+                ));
             }
         };
         check(

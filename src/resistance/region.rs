@@ -348,15 +348,21 @@ impl Piece {
                 let mut stops = vec![0.0];
                 if root > 0.0 && circle.is_finite() {
                     stops.extend(
-                        [(-half - root.sqrt()) / length, (-half + root.sqrt()) / length]
-                            .into_iter()
-                            .filter(|stop| *stop > 0.0 && *stop < 1.0),
+                        [
+                            (-half - root.sqrt()) / length,
+                            (-half + root.sqrt()) / length,
+                        ]
+                        .into_iter()
+                        .filter(|stop| *stop > 0.0 && *stop < 1.0),
                     );
                 }
                 stops.push(1.0);
-                sum_between(&stops, circle, |stop| along(from, step, stop), |a, b| {
-                    0.5 * cross(along(from, step, a), along(from, step, b))
-                })
+                sum_between(
+                    &stops,
+                    circle,
+                    |stop| along(from, step, stop),
+                    |a, b| 0.5 * cross(along(from, step, a), along(from, step, b)),
+                )
             }
             Self::Arc {
                 centre,
@@ -413,8 +419,7 @@ fn sum_between(
 pub fn outside_disc(arcs: &[Arc], size: f64, disc: ([f64; 2], f64)) -> Vec<Arc> {
     let (centre, radius) = disc;
     let distance = dot(centre, centre).sqrt();
-    let cosine =
-        (distance * distance + size * size - radius * radius) / (2.0 * size * distance);
+    let cosine = (distance * distance + size * size - radius * radius) / (2.0 * size * distance);
     if cosine >= 1.0 {
         return arcs.to_vec();
     }
