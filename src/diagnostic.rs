@@ -2,6 +2,13 @@
 
 use std::ops::Range;
 
+mod nearest;
+pub mod registry;
+mod shown;
+
+pub use nearest::nearest;
+pub use shown::{Colour, shown};
+
 /// A fault in a joint file or on the command line: stops the run, exit code 2.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Fault {
