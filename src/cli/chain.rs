@@ -2,11 +2,12 @@
 
 use crate::{
     catalog,
-    cli::console::{Trouble, error},
-    diagnostic::Fault,
+    cli::console::Trouble,
+    diagnostic::{self, Colour, Fault},
     estimate::{Estimate, FieldMap, RingRow, TorqueSweep},
     joint::Joint,
     report::listing::Listing,
+    units::{self, Quantity},
 };
 
 /// What `estimate` is asked for.
@@ -25,14 +26,6 @@ pub struct SweepOptions {
     pub steps: usize,
     pub draws: u32,
     pub seed: u64,
-}
-
-/// One entry of `explain`.
-pub struct Entry {
-    pub code: &'static str,
-    pub title: &'static str,
-    pub meaning: &'static str,
-    pub remedy: &'static str,
 }
 
 /// Encoding of a figure.
@@ -61,14 +54,11 @@ pub fn read(text: &str, _sets: &[String]) -> Result<Joint, (String, Vec<Fault>)>
     ))
 }
 
-pub fn shown(fault: &Fault, path: &str, _text: &str) -> String {
-    if fault.code.starts_with("file/") {
-        return error(
-            &format!("{} [{}]", fault.message, fault.code),
-            fault.help.as_deref(),
-        );
-    }
-    error(&format!("{path}: {}", fault.message), fault.help.as_deref())
+/// A fault drawn into the text it is in. Colour is always there; the console strips it.
+pub fn shown(fault: &Fault, path: &str, text: &str) -> String {
+    let mut drawn = diagnostic::shown(fault, path, text, Colour::Ansi);
+    drawn.push('\n');
+    drawn
 }
 
 pub fn estimate(_joint: &Joint, _options: &Options) -> Result<Estimate, Trouble> {
@@ -87,20 +77,21 @@ pub fn ring_tables(_joint: &Joint) -> Result<Vec<Vec<RingRow>>, Trouble> {
     not_built()
 }
 
-pub fn torque(_text: &str) -> Result<f64, String> {
-    Err(NOT_BUILT.to_owned())
+/// A torque from the command line, N m.
+pub fn torque(text: &str) -> Result<f64, String> {
+    units::parse(text, Quantity::Torque).map_err(|fault| match fault.help {
+        Some(help) => format!("{}; {help}", fault.message),
+        None => fault.message,
+    })
 }
 
 pub fn schema() -> serde_json::Value {
     serde_json::Value::Null
 }
 
-pub fn entries() -> &'static [Entry] {
-    &[]
-}
-
-pub fn nearest(_name: &str, _known: &[String]) -> Option<String> {
-    None
+/// The name that was probably meant.
+pub fn nearest(name: &str, known: &[String]) -> Option<String> {
+    diagnostic::nearest(name, known.iter().map(String::as_str))
 }
 
 pub fn listings() -> Vec<Listing> {

@@ -2,9 +2,10 @@
 
 use crate::{
     cli::{
-        chain::{self, Entry},
+        chain,
         console::{Console, Layout, Outcome, Trouble},
     },
+    diagnostic::registry::{self, Entry, Gravity, Kind},
     report::{
         json::FORMAT,
         number::wrapped,
@@ -14,6 +15,7 @@ use crate::{
 };
 use clap::Args;
 use serde_json::{Value, json};
+use std::fmt::Write;
 
 /// Explain a caution, a fault or a law by its code
 #[derive(Debug, Args)]
@@ -28,7 +30,7 @@ pub struct Explain {
 impl Explain {
     /// Explains one code or lists them all.
     pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
-        let entries = chain::entries();
+        let entries = registry::entries();
         let Some(code) = self.code else {
             if self.json {
                 let list: Vec<Value> = entries.iter().map(entry).collect();
@@ -66,27 +68,65 @@ impl Explain {
 fn entry(entry: &Entry) -> Value {
     json!({
         "code": entry.code,
+        "kind": kind(entry.kind),
         "title": entry.title,
         "meaning": entry.meaning,
         "remedy": entry.remedy,
+        "law": entry.law.map(|law| json!({
+            "equation": law.equation, "range": law.range, "source": law.source,
+        })),
     })
+}
+
+fn kind(kind: Kind) -> &'static str {
+    match kind {
+        Kind::Fault => "fault",
+        Kind::Caution(Gravity::Grave) => "grave caution",
+        Kind::Caution(Gravity::Range) => "caution, out of range",
+        Kind::Caution(Gravity::Note) => "caution",
+        Kind::Law => "law",
+    }
 }
 
 fn index(entries: &[Entry]) -> String {
     let rows: Vec<Vec<String>> = entries
         .iter()
-        .map(|entry| vec![entry.code.to_owned(), entry.title.to_owned()])
+        .map(|entry| {
+            vec![
+                entry.code.to_owned(),
+                kind(entry.kind).to_owned(),
+                entry.title.to_owned(),
+            ]
+        })
         .collect();
-    aligned(&[("code", Side::Left), ("title", Side::Left)], &rows)
+    aligned(
+        &[
+            ("code", Side::Left),
+            ("kind", Side::Left),
+            ("title", Side::Left),
+        ],
+        &rows,
+    )
 }
 
 fn page(entry: &Entry) -> String {
-    let mut text = format!("{}: {}\n", entry.code, entry.title);
+    let mut text = format!("{} ({}): {}\n", entry.code, kind(entry.kind), entry.title);
     for part in [entry.meaning, entry.remedy] {
         for paragraph in part.split("\n\n").filter(|part| !part.trim().is_empty()) {
             text.push('\n');
             text.push_str(&wrapped(paragraph, WIDTH, 0));
             text.push('\n');
+        }
+    }
+    if let Some(law) = entry.law {
+        text.push('\n');
+        for (name, value) in [
+            ("law", law.equation),
+            ("range", law.range),
+            ("source", law.source),
+        ] {
+            let body = wrapped(value, WIDTH - 8, 0).replace('\n', "\n        ");
+            let _ = writeln!(text, "{name:<8}{body}");
         }
     }
     text

@@ -22,15 +22,15 @@ pub fn torque(sweep: &TorqueSweep) -> String {
         .map(|(index, point)| {
             let mut marks = Vec::new();
             if Some(index) == stated {
-                marks.push("nearest to stated");
+                marks.push("stated");
             }
             if Some(index) == best {
-                marks.push("lowest resistance");
+                marks.push("best");
             }
             if !point.passes {
-                marks.push("beyond a strength limit");
+                marks.push("over");
             }
-            row(point, &marks.join(", "))
+            row(point, &marks.join(" "))
         })
         .collect();
     let right = Side::Right;
@@ -38,9 +38,9 @@ pub fn torque(sweep: &TorqueSweep) -> String {
         &[
             ("torque\nN·m", right),
             ("force kN\nnominal", right),
-            ("source to\nsink low", right),
+            ("sink K/W\nlow", right),
             ("sink K/W\nnominal", right),
-            ("\nhigh", right),
+            ("sink K/W\nhigh", right),
             ("added K/W\nnominal", right),
             ("contact K/W\nnominal", right),
             ("of yield\nhighest", right),
@@ -51,20 +51,25 @@ pub fn torque(sweep: &TorqueSweep) -> String {
     let mut text = format!("{}\n", plain(&sweep.title));
     let _ = writeln!(
         text,
-        "torque of {}; the other fasteners as stated\n\n{table}",
+        "torque of {}; the other fasteners as stated\n\
+         sink: source to sink; added: by the joint; contact: the faces alone, without spreading\n\n{table}",
         plain(&sweep.group)
     );
-    let _ = writeln!(text, "stated torque   {} N·m", four(sweep.stated));
+    let _ = writeln!(
+        text,
+        "stated   {} N·m (the nearest torque is marked)",
+        four(sweep.stated)
+    );
     if let Some((torque, limit)) = sweep.largest {
         let _ = writeln!(
             text,
-            "largest torque  {} N·m, ended by {limit}",
+            "over     beyond {} N·m, where {limit} ends the window",
             four(torque)
         );
     }
     let _ = writeln!(
         text,
-        "lowest source to sink within this range at {} N·m",
+        "best     {} N·m: lowest source to sink within this range",
         four(sweep.best)
     );
     if let Some((resistance, bound)) = sweep.required {
@@ -74,7 +79,7 @@ pub fn torque(sweep: &TorqueSweep) -> String {
         };
         let _ = writeln!(
             text,
-            "required        {side} {} K/W source to sink",
+            "required {side} {} K/W source to sink",
             four(resistance)
         );
     }

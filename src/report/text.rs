@@ -109,11 +109,11 @@ fn bolts(case: &CaseResult) -> String {
     let mut text = aligned(
         &[
             ("clamp force\nper bolt", Side::Left),
-            ("kN\nlow", right),
-            ("assembly\nnominal", right),
+            ("\nlow", right),
+            ("assembly kN\nnominal", right),
             ("\nhigh", right),
-            ("kN\nlow", right),
-            ("service\nnominal", right),
+            ("\nlow", right),
+            ("service kN\nnominal", right),
             ("\nhigh", right),
             ("of yield\nnominal", right),
             ("\nhighest", right),

@@ -33,7 +33,7 @@ pub fn results(case: &CaseResult) -> String {
         (
             "perfect contact",
             &results.perfect_contact,
-            "the floor without a joint",
+            "the floor: no interface",
         ),
     ]
     .into_iter()
@@ -86,7 +86,7 @@ fn scaled(case: &CaseResult) -> String {
         four(whole / count),
     );
     text.push_str(if case.bolts.len() > 1 {
-        " (limited by spreading: not a figure to multiply)\n"
+        " (spreading: do not multiply)\n"
     } else {
         "\n"
     });
@@ -114,14 +114,14 @@ pub fn verdict(estimate: &Estimate, case: &CaseResult) -> String {
     if let Some(rise) = case.rise {
         let _ = write!(
             text,
-            "rise above the sink surface at {} W, K: {}; hottest point {}; across the faces {}",
+            "rise above the sink surface at {} W: {} K; hottest point {} K; across the faces {} K",
             optional(estimate.heat),
             spread(&rise.source, 1.0).replace("  ", " "),
             four(rise.hottest),
             four(rise.interface_drop),
         );
         if let Some(drop) = rise.coolant_drop {
-            let _ = write!(text, "; sink surface to coolant {}", four(drop));
+            let _ = write!(text, "; sink surface to coolant {} K", four(drop));
         }
         text = wrapped(&text, WIDTH, 2);
         text.push('\n');
