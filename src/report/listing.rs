@@ -55,11 +55,17 @@ pub fn text(listing: &Listing) -> String {
         .iter()
         .map(|item| item.cells.iter().map(|cell| plain(cell)).collect())
         .collect();
+    let starred = rows.iter().flatten().any(|cell| cell.ends_with('*'));
     format!(
-        "{} ({})\n{}",
+        "{} ({})\n{}{}",
         listing.kind,
         rows.len(),
-        aligned(&listing.headings, &rows)
+        aligned(&listing.headings, &rows),
+        if starred {
+            "* from memory, not read in a source\n"
+        } else {
+            ""
+        }
     )
 }
 
