@@ -33,13 +33,16 @@ A joint file named - is read from standard input.";
 #[derive(Debug, Parser)]
 #[command(name = "ringsum", version, after_help = EXIT_CODES, disable_help_subcommand = true)]
 struct Cli {
-    /// When to use colour; `auto` obeys `NO_COLOR` and is plain when piped
+    /// When to use colour; auto is plain when piped and under `NO_COLOR`
     #[arg(
         long,
         global = true,
         value_enum,
-        value_name = "WHEN",
-        default_value = "auto"
+        value_name = "auto|always|never",
+        default_value = "auto",
+        hide_possible_values = true,
+        hide_default_value = true,
+        display_order = 100
     )]
     color: Color,
     #[command(subcommand)]

@@ -396,6 +396,14 @@ fn text_carries_no_control_characters_of_the_file() {
 }
 
 #[test]
+fn colour_changes_no_word() {
+    let report = text::estimate(&estimate());
+    let painted = text::painted(&report);
+    assert_ne!(painted, report);
+    assert_eq!(anstream::adapter::strip_str(&painted).to_string(), report);
+}
+
+#[test]
 fn nothing_at_all_is_still_a_report() {
     let mut empty = estimate();
     empty.cases.clear();

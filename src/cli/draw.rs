@@ -21,7 +21,13 @@ pub struct Draw {
     #[arg(long, value_name = "DIR")]
     out: PathBuf,
     /// Format of the figures
-    #[arg(long, value_enum, default_value = "svg")]
+    #[arg(
+        long,
+        value_enum,
+        value_name = "svg|png|both",
+        default_value = "svg",
+        hide_possible_values = true
+    )]
     format: Format,
     /// Override a field: --set 'plate.box.thickness="6 mm"'
     #[arg(long = "set", value_name = "KEY=VALUE")]

@@ -16,8 +16,15 @@ use crate::{
 use clap::Args;
 use std::path::{Path, PathBuf};
 
+const EXAMPLES: &str = "\
+Examples:
+  ringsum estimate joint.toml
+  ringsum estimate joint.toml --set 'fastener.torque.value=\"2 N·m\"'
+  ringsum estimate joints/*.toml --json --strict";
+
 /// Thermal resistance of joints: low, nominal and high, with the planes of every number
 #[derive(Debug, Args)]
+#[command(after_help = EXAMPLES)]
 #[expect(
     clippy::struct_excessive_bools,
     reason = "each is a flag of its own on the command line"
@@ -156,7 +163,7 @@ impl Estimate {
         } else {
             Detail::Full
         };
-        let mut report = text::estimate_at(estimate, detail);
+        let mut report = text::painted(&text::estimate_at(estimate, detail));
         report.push_str(&text::rings(rings));
         console.result(&report)?;
         Ok(())

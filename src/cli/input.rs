@@ -58,10 +58,9 @@ pub fn read(path: &Path) -> Result<Source, Fault> {
             return Err(fault(
                 "file/unreadable",
                 format!("`{name}` is a folder, not a joint file"),
-                Some(format!(
-                    "name a file in it: {}",
-                    path.join("joint.toml").display()
-                )),
+                joints(path)
+                    .first()
+                    .map(|name| format!("name a file in it: {}", path.join(name).display())),
             ));
         }
         fs::File::open(path).and_then(limited)
@@ -136,12 +135,7 @@ fn neighbour(path: &Path) -> Option<PathBuf> {
         _ => Path::new("."),
     };
     let wanted = path.file_name()?.to_str()?;
-    let mut names: Vec<String> = fs::read_dir(folder)
-        .ok()?
-        .filter_map(|entry| entry.ok()?.file_name().into_string().ok())
-        .filter(|name| Path::new(name).extension().is_some_and(|end| end == "toml"))
-        .collect();
-    names.sort();
+    let names = joints(folder);
     let with_ending = format!("{wanted}.toml");
     let near = if names.contains(&with_ending) {
         with_ending
@@ -149,6 +143,19 @@ fn neighbour(path: &Path) -> Option<PathBuf> {
         chain::nearest(wanted, &names)?
     };
     Some(path.with_file_name(near))
+}
+
+/// The joint files of a folder, in order.
+fn joints(folder: &Path) -> Vec<String> {
+    let Ok(entries) = fs::read_dir(folder) else {
+        return Vec::new();
+    };
+    let mut names: Vec<String> = entries
+        .filter_map(|entry| entry.ok()?.file_name().into_string().ok())
+        .filter(|name| Path::new(name).extension().is_some_and(|end| end == "toml"))
+        .collect();
+    names.sort();
+    names
 }
 
 fn not_utf8(name: &str, bytes: &[u8]) -> Fault {

@@ -8,6 +8,7 @@ use crate::{
         table::{Side, aligned},
     },
 };
+use anstyle::{AnsiColor, Style};
 use std::fmt::Write;
 
 mod thermal;
@@ -209,6 +210,36 @@ fn assumptions(assumptions: &[Assumption], detail: Detail) -> String {
             "  {}",
             wrapped(&line, WIDTH - 2, 2).replace('\n', "\n  ")
         );
+    }
+    text
+}
+
+/// The report with colour for a terminal: headings bold, verdicts in green, yellow and red.
+///
+/// The words stay the same, so nothing is lost where colour is stripped.
+pub fn painted(report: &str) -> String {
+    let bold = Style::new().bold();
+    let verdicts = [
+        ("NOT MET", AnsiColor::Red),
+        ("UNCERTAIN", AnsiColor::Yellow),
+        (": MET", AnsiColor::Green),
+    ];
+    let mut text = String::new();
+    let mut opens = true;
+    for line in report.lines() {
+        let verdict = verdicts
+            .iter()
+            .find(|(word, _)| line.starts_with("requirement") && line.contains(word));
+        if let Some((word, color)) = verdict {
+            let style = color.on_default().bold();
+            let marked = line.replacen(word, &format!("{style}{word}{style:#}"), 1);
+            let _ = writeln!(text, "{marked}");
+        } else if opens {
+            let _ = writeln!(text, "{bold}{line}{bold:#}");
+        } else {
+            let _ = writeln!(text, "{line}");
+        }
+        opens = line.is_empty();
     }
     text
 }
