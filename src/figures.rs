@@ -1,1 +1,98 @@
-//! Drawings from results only.
+//! Drawings from results only: the same marks as SVG and as PNG.
+
+mod axis;
+mod clip;
+mod cumulative;
+mod flags;
+mod fonts;
+mod legend;
+mod lettering;
+mod output;
+mod picture;
+mod plan;
+mod ramp;
+mod sheet;
+mod torque;
+
+pub use cumulative::{CumulativePlot, Curve, RadiusMark};
+pub use plan::{PlanBolt, PlanMap, PlanOutline, PlanShape, Scale};
+
+use crate::estimate::TorqueSweep;
+
+/// The file a drawing becomes.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Format {
+    /// Scalable; text stays text, with fallback fonts named.
+    Svg,
+    /// Pixels at twice the nominal size; text from the bundled font.
+    Png,
+}
+
+/// Everything that can be drawn.
+#[derive(Clone, Debug, PartialEq)]
+pub enum Drawing {
+    /// A field over the plan of the joint.
+    Plan(PlanMap),
+    /// Conductance gathered from the hole outwards.
+    Cumulative(CumulativePlot),
+    /// Resistance against torque.
+    Torque(TorqueSweep),
+}
+
+/// Why a drawing cannot be made.
+#[derive(Clone, Debug, PartialEq, Eq, thiserror::Error)]
+pub enum FigureError {
+    /// No value to draw.
+    #[error("nothing to draw: {0} holds no value")]
+    Empty(&'static str),
+    /// A value that is infinite, not a number where one must be, or beyond 1e±60 in the shown unit.
+    #[error("cannot draw {0}: a value is not finite or too far from unity")]
+    NotFinite(&'static str),
+    /// The numbers do not fit together, such as a field with too few cells.
+    #[error("cannot draw {0}: its sizes do not fit together")]
+    Shape(&'static str),
+    /// The drawing library or the image encoder failed.
+    #[error("the figure could not be written: {0}")]
+    Output(String),
+}
+
+/// The drawing as a file of the format, ready to be saved.
+pub fn render(drawing: &Drawing, format: Format) -> Result<Vec<u8>, FigureError> {
+    match format {
+        Format::Svg => svg(drawing).map(String::into_bytes),
+        Format::Png => png(drawing),
+    }
+}
+
+/// The drawing as one `<svg>` element without prolog: a file of its own or part of a page.
+pub fn svg(drawing: &Drawing) -> Result<String, FigureError> {
+    output::svg(&sheet(drawing)?)
+}
+
+/// The drawing as PNG, two pixels to the nominal one.
+pub fn png(drawing: &Drawing) -> Result<Vec<u8>, FigureError> {
+    output::png(&sheet(drawing)?)
+}
+
+fn sheet(drawing: &Drawing) -> Result<sheet::Sheet, FigureError> {
+    match drawing {
+        Drawing::Plan(map) => plan::draw(map),
+        Drawing::Cumulative(plot) => cumulative::draw(plot),
+        Drawing::Torque(sweep) => torque::draw(sweep),
+    }
+}
+
+/// The value itself when it can be drawn: finite and neither huge nor tiny beyond use.
+fn drawable(value: f64, what: &'static str) -> Result<f64, FigureError> {
+    const FARTHEST: f64 = 1e60;
+    if value.is_finite() && value.abs() < FARTHEST {
+        // Below this size a number is zero on any axis, and its logarithm would spoil one.
+        Ok(if value.abs() < 1.0 / FARTHEST {
+            0.0
+        } else {
+            value
+        })
+    } else {
+        Err(FigureError::NotFinite(what))
+    }
+}

@@ -1,0 +1,266 @@
+//! The sheet of paper: a list of marks in points, laid down once and replayed on any backend.
+
+use crate::figures::{
+    clip::Frame,
+    fonts::Weight,
+    lettering::{Anchor, Lettering, Turn, cleaned},
+    picture::Picture,
+};
+
+/// Red, green and blue, sRGB.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub(super) struct Colour(pub(super) u8, pub(super) u8, pub(super) u8);
+
+/// Lines and text.
+pub(super) const INK: Colour = Colour(0x1C, 0x26, 0x30);
+/// Secondary text and fine lines.
+pub(super) const GREY: Colour = Colour(0x5E, 0x68, 0x71);
+/// Hatching and grids.
+pub(super) const FAINT: Colour = Colour(0xC9, 0xCF, 0xD4);
+/// The one accent: limits, and where heat enters.
+pub(super) const ACCENT: Colour = Colour(0xB5, 0x3F, 0x0E);
+/// The ground.
+pub(super) const PAPER: Colour = Colour(0xFF, 0xFF, 0xFF);
+
+/// Wide line of engineering drawings, points.
+pub(super) const WIDE: f64 = 1.25;
+/// Narrow line, half the wide one (ISO 128-2).
+pub(super) const NARROW: f64 = 0.6;
+
+/// Text size of labels, points.
+pub(super) const LABEL: f64 = 11.5;
+
+/// How a line is drawn.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub(super) struct Stroke {
+    /// Width, points.
+    pub(super) width: f64,
+    /// Colour.
+    pub(super) colour: Colour,
+    /// Lengths of dash and gap in turn, points; empty for a continuous line.
+    pub(super) dash: &'static [f64],
+}
+
+impl Stroke {
+    /// A continuous line.
+    pub(super) const fn solid(width: f64, colour: Colour) -> Self {
+        Self {
+            width,
+            colour,
+            dash: &[],
+        }
+    }
+
+    /// A line of dashes.
+    pub(super) const fn dashed(width: f64, colour: Colour, dash: &'static [f64]) -> Self {
+        Self {
+            width,
+            colour,
+            dash,
+        }
+    }
+}
+
+/// One mark on the sheet.
+#[derive(Clone, Debug, PartialEq)]
+pub(super) enum Mark {
+    /// A line through points.
+    Line(Vec<[f64; 2]>, f64, Colour),
+    /// A filled area.
+    Area(Vec<[f64; 2]>, Colour),
+    /// A filled circle: centre and radius.
+    Disc([f64; 2], f64, Colour),
+    /// A text at a place.
+    Text([f64; 2], String, Lettering),
+}
+
+/// The sheet.
+#[derive(Clone, Debug, PartialEq)]
+pub(super) struct Sheet {
+    /// Width and height, points.
+    pub(super) size: [f64; 2],
+    /// What the figure is about, for readers who do not see it.
+    pub(super) title: String,
+    /// Fields, which lie under every mark.
+    pub(super) pictures: Vec<Picture>,
+    /// Marks, later ones on top.
+    pub(super) marks: Vec<Mark>,
+}
+
+impl Sheet {
+    /// An empty sheet of this width; the height follows from what is drawn.
+    pub(super) fn new(width: f64) -> Self {
+        Self {
+            size: [width, 0.0],
+            title: String::new(),
+            pictures: Vec::new(),
+            marks: Vec::new(),
+        }
+    }
+
+    /// Title in bold and what is shown below it; returns the height used.
+    pub(super) fn header(&mut self, title: &str, subtitle: &str) -> f64 {
+        const MARGIN: f64 = 20.0;
+        let bold = Lettering {
+            weight: Weight::Bold,
+            ..Lettering::plain(14.5, INK, Anchor::Start)
+        };
+        let small = Lettering::plain(LABEL, GREY, Anchor::Start);
+        let room = self.size[0] - 2.0 * MARGIN;
+        let title = cleaned(title);
+        self.title = format!("{title}: {subtitle}");
+        let mut baseline = 12.0;
+        for line in bold.wrapped(&title, room, 2) {
+            baseline += 18.0;
+            self.text([MARGIN, baseline], line, bold);
+        }
+        baseline += 17.0;
+        self.text([MARGIN, baseline], small.shortened(subtitle, room), small);
+        baseline + 10.0
+    }
+
+    /// A line through the points.
+    pub(super) fn line(&mut self, points: &[[f64; 2]], stroke: Stroke) {
+        if stroke.dash.is_empty() {
+            self.stroke(points.to_vec(), stroke);
+            return;
+        }
+        for piece in dashes(points, stroke.dash) {
+            self.stroke(piece, stroke);
+        }
+    }
+
+    /// The part of a line within a frame.
+    pub(super) fn line_within(&mut self, frame: Frame, points: &[[f64; 2]], stroke: Stroke) {
+        for piece in frame.line(points) {
+            self.line(&piece, stroke);
+        }
+    }
+
+    /// A closed line; the seam lies in the middle of the first side so that every corner is sharp.
+    pub(super) fn closed_within(&mut self, frame: Frame, points: &[[f64; 2]], stroke: Stroke) {
+        let [first, second, ..] = points else {
+            return;
+        };
+        let seam = [(first[0] + second[0]) / 2.0, (first[1] + second[1]) / 2.0];
+        let mut path = vec![seam];
+        path.extend_from_slice(&points[1..]);
+        path.extend([*first, seam]);
+        self.line_within(frame, &path, stroke);
+    }
+
+    /// A filled area.
+    pub(super) fn area(&mut self, points: Vec<[f64; 2]>, colour: Colour) {
+        if points.len() > 2 {
+            self.marks.push(Mark::Area(points, colour));
+        }
+    }
+
+    /// A filled circle.
+    pub(super) fn disc(&mut self, centre: [f64; 2], radius: f64, colour: Colour) {
+        self.marks.push(Mark::Disc(centre, radius, colour));
+    }
+
+    /// A text; the place is its anchor on the baseline.
+    pub(super) fn text(&mut self, at: [f64; 2], content: impl Into<String>, lettering: Lettering) {
+        let content = content.into();
+        if !content.is_empty() {
+            self.marks.push(Mark::Text(at, content, lettering));
+        }
+    }
+
+    fn stroke(&mut self, points: Vec<[f64; 2]>, stroke: Stroke) {
+        if points.len() > 1 {
+            self.marks
+                .push(Mark::Line(points, stroke.width, stroke.colour));
+        }
+    }
+}
+
+/// The circle as a closed ring of points, fine enough that no corner shows.
+pub(super) fn circle(centre: [f64; 2], radius: f64) -> Vec<[f64; 2]> {
+    let count = (radius.abs().sqrt() * 10.0).clamp(24.0, 180.0) as usize;
+    (0..count)
+        .map(|k| {
+            let angle = std::f64::consts::TAU * k as f64 / count as f64;
+            [
+                centre[0] + radius * angle.cos(),
+                centre[1] - radius * angle.sin(),
+            ]
+        })
+        .collect()
+}
+
+/// Cuts a line into its dashes.
+fn dashes(points: &[[f64; 2]], pattern: &[f64]) -> Vec<Vec<[f64; 2]>> {
+    let mut pieces = Vec::new();
+    let (mut index, mut left) = (0, pattern[0]);
+    let mut piece: Vec<[f64; 2]> = points.first().copied().into_iter().collect();
+    for pair in points.windows(2) {
+        let (mut from, to) = (pair[0], pair[1]);
+        let mut rest = (to[0] - from[0]).hypot(to[1] - from[1]);
+        while rest > left {
+            let t = left / rest;
+            from = [0, 1].map(|k| from[k] + t * (to[k] - from[k]));
+            rest -= left;
+            if index % 2 == 0 {
+                piece.push(from);
+                pieces.push(std::mem::take(&mut piece));
+            } else {
+                piece = vec![from];
+            }
+            index += 1;
+            left = pattern[index % pattern.len()];
+        }
+        left -= rest;
+        if index % 2 == 0 {
+            piece.push(to);
+        }
+    }
+    if piece.len() > 1 {
+        pieces.push(piece);
+    }
+    pieces
+}
+
+/// The rectangle a text covers: left, top, right, bottom.
+pub(super) fn text_box(at: [f64; 2], content: &str, lettering: Lettering) -> Frame {
+    let width = lettering.width(content);
+    let before = match lettering.anchor {
+        Anchor::Start => 0.0,
+        Anchor::Middle => width / 2.0,
+        Anchor::End => width,
+    };
+    let (rise, fall) = (0.76 * lettering.size, 0.24 * lettering.size);
+    match lettering.turn {
+        Turn::None => Frame {
+            left: at[0] - before,
+            top: at[1] - rise,
+            right: at[0] - before + width,
+            bottom: at[1] + fall,
+        },
+        Turn::Up => Frame {
+            left: at[0] - rise,
+            top: at[1] + before - width,
+            right: at[0] + fall,
+            bottom: at[1] + before,
+        },
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn dashes_cover_their_share_of_the_line() {
+        let pieces = dashes(&[[0.0, 0.0], [50.0, 0.0], [50.0, 50.0]], &[3.0, 2.0]);
+        let drawn: f64 = pieces
+            .iter()
+            .flat_map(|p| p.windows(2))
+            .map(|p| (p[1][0] - p[0][0]).hypot(p[1][1] - p[0][1]))
+            .sum();
+        // The line is a whole number of patterns long, so the share is exact but for rounding.
+        assert!((drawn - 60.0).abs() < 1e-9);
+    }
+}

@@ -1,0 +1,346 @@
+//! Resistance against torque: what tightening buys, and where the bolt ends it.
+
+use crate::{
+    estimate::{Band, TorqueSweep},
+    figures::{
+        FigureError,
+        axis::{self, Axis, BELOW, Grid},
+        clip::Frame,
+        drawable,
+        flags::{Flag, Flags},
+        legend::{Sample, hatch, legend},
+        lettering::{Anchor, Lettering},
+        ramp,
+        sheet::{ACCENT, Colour, INK, LABEL, NARROW, PAPER, Sheet, Stroke, WIDE},
+    },
+    joint::Limit,
+};
+
+const MARGIN: f64 = 20.0;
+const WIDTH: f64 = 560.0;
+const UPPER: f64 = 210.0;
+const LOWER: f64 = 140.0;
+const BETWEEN: f64 = 20.0;
+
+const REQUIRED: Stroke = Stroke::dashed(WIDE, ACCENT, &[8.0, 3.0]);
+const STATED: Stroke = Stroke::solid(0.8, INK);
+const LARGEST: Stroke = Stroke::solid(0.8, ACCENT);
+
+/// One torque with a band, shown unit.
+#[derive(Clone, Copy)]
+struct Point {
+    torque: f64,
+    low: f64,
+    nominal: f64,
+    high: f64,
+}
+
+/// Draws the sweep.
+pub(super) fn draw(sweep: &TorqueSweep) -> Result<Sheet, FigureError> {
+    let upper_points = band(sweep, |point| point.source_to_sink)?;
+    let lower_points = band(sweep, |point| point.contact)?;
+    let stated = drawable(sweep.stated, "the stated torque")?;
+    let best = drawable(sweep.best, "the best torque")?;
+    let torques = || upper_points.iter().map(|p| p.torque).chain([stated]);
+    let x_axis = Axis::over(
+        torques().fold(f64::INFINITY, f64::min),
+        torques().fold(f64::NEG_INFINITY, f64::max),
+    );
+    let required = match sweep.required {
+        Some((limit, bound)) => Some((drawable(limit, "the requirement")?, bound)),
+        None => None,
+    };
+    let upper_axis = upper_axis(&upper_points, required.map(|(limit, _)| limit));
+    let lower_axis = lower_axis(&lower_points);
+
+    let note = required.map(|(limit, bound)| requirement_note(limit, bound));
+    let beside = note.as_ref().map_or(10.0, |lines| {
+        let width = |line: &String| note_lettering().width(line);
+        lines.iter().map(width).fold(0.0, f64::max) + 8.0
+    });
+    let left =
+        MARGIN + axis::side_room(&upper_axis, UPPER).max(axis::side_room(&lower_axis, LOWER));
+    let right = WIDTH - MARGIN - beside;
+    let across = |torque: f64| left + x_axis.place(torque) * (right - left);
+
+    let flags = Flags::arranged(
+        torque_flags(sweep, &x_axis, &across)?,
+        [MARGIN, WIDTH - MARGIN],
+    );
+    let mut sheet = Sheet::new(WIDTH);
+    let subtitle = format!("resistance against the torque of {}", sweep.group);
+    let top = sheet.header(&sweep.title, &subtitle) + flags.height() + 8.0;
+    let upper = Frame {
+        left,
+        top,
+        right,
+        bottom: top + UPPER,
+    };
+    let lower = Frame {
+        top: upper.bottom + BETWEEN,
+        bottom: upper.bottom + BETWEEN + LOWER,
+        ..upper
+    };
+
+    let barred = sweep
+        .largest
+        .map(|(largest, _)| across(largest).clamp(left, right));
+    for frame in [upper, lower] {
+        if let Some(from) = barred.filter(|from| *from < right) {
+            hatch(
+                &mut sheet,
+                Frame {
+                    left: from,
+                    ..frame
+                },
+            );
+        }
+    }
+    axis::left(
+        &mut sheet,
+        upper,
+        (&upper_axis, "source to sink, K/W"),
+        Grid::Faint,
+    );
+    axis::left(
+        &mut sheet,
+        lower,
+        (&lower_axis, "contact only, K/W"),
+        Grid::Faint,
+    );
+    axis::bottom(&mut sheet, upper, (&x_axis, None));
+    axis::bottom(&mut sheet, lower, (&x_axis, Some("torque, N\u{a0}m")));
+
+    let at = |frame: Frame, axis: &Axis, point: Point, value: f64| {
+        [
+            across(point.torque),
+            frame.bottom - axis.place(value) * frame.height(),
+        ]
+    };
+    for (frame, axis, points) in [
+        (upper, &upper_axis, &upper_points),
+        (lower, &lower_axis, &lower_points),
+    ] {
+        let mut outline: Vec<[f64; 2]> =
+            points.iter().map(|p| at(frame, axis, *p, p.low)).collect();
+        outline.extend(points.iter().rev().map(|p| at(frame, axis, *p, p.high)));
+        sheet.area(frame.area(&outline), band_colour());
+    }
+    if let (Some((limit, _)), Some(lines)) = (required, note) {
+        draw_requirement(&mut sheet, upper, &upper_axis, (limit, &lines));
+    }
+    flags.draw(&mut sheet, upper, lower.bottom);
+    for (frame, axis, points) in [
+        (upper, &upper_axis, &upper_points),
+        (lower, &lower_axis, &lower_points),
+    ] {
+        let line: Vec<[f64; 2]> = points
+            .iter()
+            .map(|p| at(frame, axis, *p, p.nominal))
+            .collect();
+        sheet.line_within(frame, &line, nominal());
+        if let [only] = line.as_slice() {
+            sheet.disc(*only, 3.0, nominal().colour);
+        }
+    }
+    if let Some(value) = between(&upper_points, best) {
+        let place = [
+            across(best),
+            upper.bottom - upper_axis.place(value) * upper.height(),
+        ];
+        if upper.holds(place) {
+            sheet.disc(place, 4.5, nominal().colour);
+            sheet.disc(place, 2.5, PAPER);
+        }
+    }
+
+    let room = Frame {
+        left: MARGIN,
+        top: lower.bottom + BELOW + 6.0,
+        right: WIDTH - MARGIN,
+        bottom: f64::INFINITY,
+    };
+    sheet.size[1] = legend(
+        &mut sheet,
+        room,
+        &key(sweep, barred.is_some_and(|b| b < right)),
+    ) + 12.0;
+    Ok(sheet)
+}
+
+fn nominal() -> Stroke {
+    Stroke::solid(2.0, ramp::colour(0.85))
+}
+
+fn band_colour() -> Colour {
+    ramp::colour(0.26)
+}
+
+/// The points of one result, torque rising; bands without draws have no width.
+fn band(
+    sweep: &TorqueSweep,
+    result: impl Fn(&crate::estimate::TorquePoint) -> Band,
+) -> Result<Vec<Point>, FigureError> {
+    const WHAT: &str = "the sweep";
+    let mut points = Vec::with_capacity(sweep.points.len());
+    for point in &sweep.points {
+        let Band { low, nominal, high } = result(point);
+        points.push(Point {
+            torque: drawable(point.torque, WHAT)?,
+            low: drawable(low.unwrap_or(nominal), WHAT)?,
+            nominal: drawable(nominal, WHAT)?,
+            high: drawable(high.unwrap_or(nominal), WHAT)?,
+        });
+    }
+    if points.is_empty() {
+        return Err(FigureError::Empty(WHAT));
+    }
+    points.sort_by(|a, b| a.torque.total_cmp(&b.torque));
+    Ok(points)
+}
+
+fn extent(points: &[Point]) -> (f64, f64) {
+    let all = || points.iter().flat_map(|p| [p.low, p.nominal, p.high]);
+    (
+        all().fold(f64::INFINITY, f64::min),
+        all().fold(f64::NEG_INFINITY, f64::max),
+    )
+}
+
+/// The requirement is taken in where that does not squeeze the curve into a corner.
+fn upper_axis(points: &[Point], limit: Option<f64>) -> Axis {
+    let (low, high) = extent(points);
+    let span = (high - low).max(0.1 * high.abs());
+    match limit {
+        Some(limit) if limit > low - span && limit < high + span => {
+            Axis::around(low.min(limit), high.max(limit))
+        }
+        _ => Axis::around(low, high),
+    }
+}
+
+fn lower_axis(points: &[Point]) -> Axis {
+    let (low, high) = extent(points);
+    if low > 0.0 && high > 8.0 * low {
+        Axis::logarithmic(low / 1.1, high * 1.1)
+    } else {
+        Axis::around(low, high)
+    }
+}
+
+fn torque_flags(
+    sweep: &TorqueSweep,
+    x_axis: &Axis,
+    across: &impl Fn(f64) -> f64,
+) -> Result<Vec<Flag>, FigureError> {
+    let mut flags = vec![Flag {
+        x: across(sweep.stated),
+        text: format!("stated {} N\u{a0}m", axis::significant(sweep.stated, 3)),
+        stroke: STATED,
+    }];
+    if let Some((largest, limit)) = sweep.largest {
+        let largest = drawable(largest, "the largest torque")?;
+        if (x_axis.low..=x_axis.high).contains(&largest) {
+            flags.push(Flag {
+                x: across(largest),
+                text: format!(
+                    "largest {} N\u{a0}m: {limit}",
+                    axis::significant(largest, 3)
+                ),
+                stroke: LARGEST,
+            });
+        }
+    }
+    Ok(flags)
+}
+
+fn note_lettering() -> Lettering {
+    Lettering::plain(LABEL - 1.0, ACCENT, Anchor::Start)
+}
+
+fn requirement_note(limit: f64, bound: Limit) -> [String; 2] {
+    let sign = match bound {
+        Limit::Most => '≤',
+        Limit::Least => '≥',
+    };
+    [
+        "required".into(),
+        format!("{sign} {}", axis::significant(limit, 3)),
+    ]
+}
+
+/// The requirement as a line with a note beside the frame, or an arrow towards it from the edge.
+fn draw_requirement(
+    sheet: &mut Sheet,
+    frame: Frame,
+    axis: &Axis,
+    (limit, lines): (f64, &[String; 2]),
+) {
+    let share = axis.place(limit);
+    let y = frame.bottom - share.clamp(0.0, 1.0) * frame.height();
+    let (x, text) = (frame.right + 7.0, note_lettering());
+    if (0.0..=1.0).contains(&share) {
+        sheet.line(&[[frame.left, y], [frame.right, y]], REQUIRED);
+        sheet.text([x, y - 3.0], lines[0].clone(), text);
+        sheet.text([x, y + 11.0], lines[1].clone(), text);
+        return;
+    }
+    let inwards = if share > 1.0 { 1.0 } else { -1.0 };
+    let start = y + inwards * 14.0;
+    let stroke = Stroke::solid(NARROW * 2.0, ACCENT);
+    let middle = x + 4.0;
+    sheet.line(&[[middle, start], [middle, y]], stroke);
+    sheet.line(
+        &[
+            [middle - 3.0, y + inwards * 5.0],
+            [middle, y],
+            [middle + 3.0, y + inwards * 5.0],
+        ],
+        stroke,
+    );
+    let first = if share > 1.0 {
+        start + 12.0
+    } else {
+        start - 18.0
+    };
+    sheet.text([x, first], lines[0].clone(), text);
+    sheet.text([x, first + 14.0], lines[1].clone(), text);
+}
+
+/// The nominal value at a torque, linear between points.
+fn between(points: &[Point], torque: f64) -> Option<f64> {
+    if let Some(point) = points.iter().find(|p| p.torque == torque) {
+        return Some(point.nominal);
+    }
+    let pair = points
+        .windows(2)
+        .find(|pair| pair[0].torque < torque && torque < pair[1].torque)?;
+    let t = (torque - pair[0].torque) / (pair[1].torque - pair[0].torque);
+    Some(pair[0].nominal + t * (pair[1].nominal - pair[0].nominal))
+}
+
+fn key(sweep: &TorqueSweep, barred: bool) -> Vec<(Sample, String)> {
+    let banded = sweep.points.iter().any(|p| p.source_to_sink.high.is_some());
+    let mut items = vec![if banded {
+        (
+            Sample::Band(band_colour(), nominal()),
+            "nominal in the band from 5 % to 95 %".to_owned(),
+        )
+    } else {
+        (Sample::Line(nominal()), "nominal".to_owned())
+    }];
+    items.push((
+        Sample::Dot(nominal().colour),
+        format!(
+            "lowest resistance, at {} N\u{a0}m",
+            axis::significant(sweep.best, 3)
+        ),
+    ));
+    if barred {
+        items.push((Sample::Hatch, "beyond the largest torque".into()));
+    }
+    if sweep.required.is_some() {
+        items.push((Sample::Line(REQUIRED), "requirement".into()));
+    }
+    items
+}
