@@ -1,1 +1,9 @@
 //! Results as text, JSON and tables.
+
+pub mod catalogue;
+pub mod json;
+pub mod listing;
+pub mod number;
+pub mod sweep;
+pub mod table;
+pub mod text;

@@ -1,0 +1,129 @@
+//! The one place where commands meet the chain: reading a joint, estimating it, drawing it.
+
+use crate::{
+    catalog,
+    cli::console::Trouble,
+    diagnostic::{self, Colour, Fault},
+    estimate::{Estimate, FieldMap, RingRow, TorqueSweep},
+    joint::Joint,
+    report::listing::Listing,
+    units::{self, Quantity},
+};
+
+/// What `estimate` is asked for.
+#[derive(Clone, Copy, Debug)]
+pub struct Options {
+    pub draws: u32,
+    pub seed: u64,
+}
+
+/// What `torque` is asked for.
+#[derive(Clone, Copy, Debug)]
+pub struct SweepOptions {
+    pub group: usize,
+    pub from: Option<f64>,
+    pub to: Option<f64>,
+    pub steps: usize,
+    pub draws: u32,
+    pub seed: u64,
+}
+
+/// Encoding of a figure.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Encoding {
+    Svg,
+    Png,
+}
+
+const NOT_BUILT: &str = "not built";
+
+fn not_built<T>() -> Result<T, Trouble> {
+    Err(Trouble::Failure(NOT_BUILT.to_owned()))
+}
+
+pub fn read(text: &str, _sets: &[String]) -> Result<Joint, (String, Vec<Fault>)> {
+    Err((
+        text.to_owned(),
+        vec![Fault {
+            code: "file/format",
+            message: NOT_BUILT.to_owned(),
+            span: 0..0,
+            expected: String::new(),
+            help: None,
+        }],
+    ))
+}
+
+/// A fault drawn into the text it is in. Colour is always there; the console strips it.
+pub fn shown(fault: &Fault, path: &str, text: &str) -> String {
+    let mut drawn = diagnostic::shown(fault, path, text, Colour::Ansi);
+    drawn.push('\n');
+    drawn
+}
+
+pub fn estimate(_joint: &Joint, _options: &Options) -> Result<Estimate, Trouble> {
+    not_built()
+}
+
+pub fn torque_sweep(_joint: &Joint, _options: &SweepOptions) -> Result<TorqueSweep, Trouble> {
+    not_built()
+}
+
+pub fn field_map(_joint: &Joint, _columns: usize) -> Result<FieldMap, Trouble> {
+    not_built()
+}
+
+pub fn ring_tables(_joint: &Joint) -> Result<Vec<Vec<RingRow>>, Trouble> {
+    not_built()
+}
+
+/// A torque from the command line, N m.
+pub fn torque(text: &str) -> Result<f64, String> {
+    units::parse(text, Quantity::Torque).map_err(|fault| match fault.help {
+        Some(help) => format!("{}; {help}", fault.message),
+        None => fault.message,
+    })
+}
+
+pub fn schema() -> serde_json::Value {
+    serde_json::Value::Null
+}
+
+/// The name that was probably meant.
+pub fn nearest(name: &str, known: &[String]) -> Option<String> {
+    diagnostic::nearest(name, known.iter().map(String::as_str))
+}
+
+pub fn listings() -> Vec<Listing> {
+    let _: Option<catalog::Material> = None;
+    Vec::new()
+}
+
+/// One figure of `draw`.
+pub struct Figure {
+    pub name: &'static str,
+    pub draw: fn(&Joint, Encoding) -> Result<Vec<u8>, Trouble>,
+}
+
+/// The figures of `draw`, in the order of force and heat.
+pub const FIGURES: &[Figure] = &[
+    Figure {
+        name: "pressure",
+        draw: |joint, _| {
+            field_map(joint, 1)?;
+            not_built()
+        },
+    },
+    Figure {
+        name: "conductance",
+        draw: |_, _| not_built(),
+    },
+    Figure {
+        name: "cumulative",
+        draw: |_, _| not_built(),
+    },
+];
+
+pub fn torque_figure(_sweep: &TorqueSweep, _encoding: Encoding) -> Result<Vec<u8>, Trouble> {
+    not_built()
+}

@@ -1,0 +1,121 @@
+//! `check`: reads joint files and tells every fault at once.
+
+use crate::{
+    cli::{
+        chain,
+        console::{Console, Layout, Outcome, Trouble},
+        input::{self, Source},
+    },
+    diagnostic::Fault,
+    joint::Joint,
+    report::listing,
+};
+use clap::Args;
+use std::{
+    fmt::Write,
+    path::{Path, PathBuf},
+};
+
+/// Read joint files and tell every fault, without computing anything
+#[derive(Debug, Args)]
+pub struct Check {
+    /// Joint files; - reads standard input
+    #[arg(required = true, value_name = "FILE")]
+    files: Vec<PathBuf>,
+    /// Print one JSON object per file
+    #[arg(long)]
+    json: bool,
+}
+
+impl Check {
+    /// Checks every file, also after one at fault.
+    pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
+        input::stdin_at_most_once(&self.files)?;
+        let layout = Layout::of_batch(self.files.len());
+        let mut outcomes = Vec::new();
+        for path in &self.files {
+            outcomes.push(match read(path, &[], console) {
+                Ok((source, _)) if self.json => {
+                    console.json(&listing::faults(&source.name, &source.text, &[]), layout)?;
+                    Outcome::Done
+                }
+                Ok((source, joint)) => {
+                    console.result(&accepted(&source.name, &joint))?;
+                    Outcome::Done
+                }
+                Err(refused) if self.json => {
+                    console.json(&refused.json(), layout)?;
+                    Outcome::Faulty
+                }
+                Err(refused) => {
+                    console.trouble(&refused.trouble());
+                    Outcome::Faulty
+                }
+            });
+        }
+        Ok(Outcome::of_batch(&outcomes))
+    }
+}
+
+/// A joint file that was not accepted.
+pub struct Refused {
+    name: String,
+    text: String,
+    faults: Vec<Fault>,
+}
+
+impl Refused {
+    /// The faults as JSON.
+    pub fn json(&self) -> serde_json::Value {
+        listing::faults(&self.name, &self.text, &self.faults)
+    }
+
+    /// The faults drawn into the text they are in.
+    pub fn trouble(&self) -> Trouble {
+        let drawn: Vec<String> = self
+            .faults
+            .iter()
+            .map(|fault| chain::shown(fault, &self.name, &self.text))
+            .collect();
+        let mut text = drawn.join("\n");
+        if self.faults.len() > 1 {
+            let _ = writeln!(text, "\n{} faults in {}", self.faults.len(), self.name);
+        }
+        Trouble::Faults(text)
+    }
+}
+
+/// Reads one joint with its overrides.
+pub fn read(
+    path: &Path,
+    sets: &[String],
+    console: &mut Console,
+) -> Result<(Source, Joint), Refused> {
+    if input::waits_for_keyboard(path) {
+        console.message("reading a joint from the keyboard; end it with Ctrl-D\n");
+    }
+    let source = input::read(path).map_err(|fault| Refused {
+        name: input::name(path),
+        text: String::new(),
+        faults: vec![fault],
+    })?;
+    match chain::read(&source.text, sets) {
+        Ok(joint) => Ok((source, joint)),
+        Err((text, faults)) => Err(Refused {
+            name: source.name,
+            text,
+            faults,
+        }),
+    }
+}
+
+fn accepted(name: &str, joint: &Joint) -> String {
+    let bolts = joint.bolts().count();
+    let assumed = joint.assumptions.len();
+    format!(
+        "{name}: ok, {} plates, {bolts} bolt{}, {assumed} assumption{}\n",
+        joint.plates.len(),
+        if bolts == 1 { "" } else { "s" },
+        if assumed == 1 { "" } else { "s" },
+    )
+}

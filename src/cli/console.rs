@@ -1,0 +1,244 @@
+//! Where results and messages go, and how a run can end.
+
+use anstream::AutoStream;
+use clap::ValueEnum;
+use std::{
+    ffi::OsString,
+    io::{self, Write},
+};
+
+/// When to use colour.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, ValueEnum)]
+pub enum Color {
+    /// At a terminal, unless `NO_COLOR` is set
+    Auto,
+    /// Also when piped
+    Always,
+    /// Not at all
+    Never,
+}
+
+impl Color {
+    fn choice(self) -> anstream::ColorChoice {
+        match self {
+            Self::Auto => anstream::ColorChoice::Auto,
+            Self::Always => anstream::ColorChoice::Always,
+            Self::Never => anstream::ColorChoice::Never,
+        }
+    }
+
+    /// The same choice for the usage errors of the argument parser.
+    pub fn for_usage(self) -> clap::ColorChoice {
+        match self {
+            Self::Auto => clap::ColorChoice::Auto,
+            Self::Always => clap::ColorChoice::Always,
+            Self::Never => clap::ColorChoice::Never,
+        }
+    }
+}
+
+/// The colour asked for, read from the raw arguments; anything odd counts as `auto`.
+pub fn asked(arguments: &[OsString]) -> Color {
+    let words: Vec<&str> = arguments.iter().filter_map(|word| word.to_str()).collect();
+    let value = words
+        .iter()
+        .find_map(|word| word.strip_prefix("--color="))
+        .or_else(|| {
+            let at = words.iter().position(|word| *word == "--color")?;
+            words.get(at + 1).copied()
+        });
+    value
+        .and_then(|value| Color::from_str(value, false).ok())
+        .unwrap_or(Color::Auto)
+}
+
+/// How a run ended.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Outcome {
+    /// All done.
+    Done,
+    /// Done, with cautions, and `--strict` was given.
+    Cautioned,
+    /// The input or the usage is at fault.
+    Faulty,
+    /// The computation or the writing failed.
+    Failed,
+}
+
+impl Outcome {
+    /// The exit code.
+    pub fn code(self) -> u8 {
+        match self {
+            Self::Done => 0,
+            Self::Failed => 1,
+            Self::Faulty => 2,
+            Self::Cautioned => 3,
+        }
+    }
+
+    /// The outcome of a batch. One file keeps its own; of several, any failure or fault is a failure.
+    pub fn of_batch(outcomes: &[Self]) -> Self {
+        match outcomes {
+            [single] => *single,
+            several
+                if several
+                    .iter()
+                    .any(|each| matches!(each, Self::Failed | Self::Faulty)) =>
+            {
+                Self::Failed
+            }
+            several if several.contains(&Self::Cautioned) => Self::Cautioned,
+            _ => Self::Done,
+        }
+    }
+}
+
+/// Why a command stopped early.
+#[derive(Debug)]
+pub enum Trouble {
+    /// Standard output takes no more.
+    Output(io::Error),
+    /// The arguments ask for something that cannot be done, with the way out.
+    Usage {
+        /// What is wrong.
+        message: String,
+        /// What to do instead.
+        help: Option<String>,
+    },
+    /// The computation or the writing of a file failed.
+    Failure(String),
+    /// A joint file is at fault; its faults, already drawn.
+    Faults(String),
+}
+
+impl From<io::Error> for Trouble {
+    fn from(fault: io::Error) -> Self {
+        Self::Output(fault)
+    }
+}
+
+impl Trouble {
+    /// A usage fault with its way out.
+    pub fn usage(message: impl Into<String>, help: impl Into<String>) -> Self {
+        Self::Usage {
+            message: message.into(),
+            help: Some(help.into()),
+        }
+    }
+
+    /// How the run ends because of it.
+    pub fn outcome(&self) -> Outcome {
+        match self {
+            Self::Output(_) | Self::Failure(_) => Outcome::Failed,
+            Self::Usage { .. } | Self::Faults(_) => Outcome::Faulty,
+        }
+    }
+}
+
+/// Standard output for results, standard error for messages; colour is stripped where it does
+/// not belong.
+pub struct Console {
+    results: AutoStream<io::Stdout>,
+    messages: AutoStream<io::Stderr>,
+}
+
+impl Console {
+    /// The console with the colour asked for.
+    pub fn new(color: Color) -> Self {
+        color.choice().write_global();
+        Self {
+            results: AutoStream::auto(io::stdout()),
+            messages: AutoStream::auto(io::stderr()),
+        }
+    }
+
+    /// Writes a result.
+    pub fn result(&mut self, text: &str) -> io::Result<()> {
+        self.results.write_all(text.as_bytes())?;
+        self.results.flush()
+    }
+
+    /// Writes a JSON value, indented for one file, on one line in a batch.
+    pub fn json(&mut self, value: &serde_json::Value, layout: Layout) -> io::Result<()> {
+        let text = match layout {
+            Layout::Indented => format!("{value:#}\n"),
+            Layout::Line => format!("{value}\n"),
+        };
+        self.result(&text)
+    }
+
+    /// Writes a message. When nobody can read it any more there is nobody left to tell.
+    pub fn message(&mut self, text: &str) {
+        let _ = self.messages.write_all(text.as_bytes());
+        let _ = self.messages.flush();
+    }
+
+    /// Tells what went wrong, and the way out.
+    pub fn trouble(&mut self, trouble: &Trouble) {
+        let text = match trouble {
+            Trouble::Output(fault) => error(&format!("cannot write the result: {fault}"), None),
+            Trouble::Usage { message, help } => error(message, help.as_deref()),
+            Trouble::Failure(message) => error(message, None),
+            Trouble::Faults(drawn) => drawn.clone(),
+        };
+        self.message(&text);
+    }
+}
+
+/// How JSON is laid out.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Layout {
+    /// Over several lines.
+    Indented,
+    /// On one line.
+    Line,
+}
+
+impl Layout {
+    /// Objects of several files stand one to a line.
+    pub fn of_batch(files: usize) -> Self {
+        if files > 1 {
+            Self::Line
+        } else {
+            Self::Indented
+        }
+    }
+}
+
+/// An error without a place in a file.
+pub fn error(message: &str, help: Option<&str>) -> String {
+    let red = anstyle::AnsiColor::Red.on_default().bold();
+    let bold = anstyle::Style::new().bold();
+    let text = format!("{red}error{red:#}: {message}\n");
+    match help {
+        Some(help) => format!("{text}{bold}help{bold:#}: {help}\n"),
+        None => text,
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn a_single_file_keeps_its_outcome_and_a_batch_fails_as_a_whole() {
+        use Outcome::{Cautioned, Done, Failed, Faulty};
+        assert_eq!(Outcome::of_batch(&[Faulty]), Faulty);
+        assert_eq!(Outcome::of_batch(&[Done, Faulty]), Failed);
+        assert_eq!(Outcome::of_batch(&[Cautioned, Failed]), Failed);
+        assert_eq!(Outcome::of_batch(&[Cautioned, Done]), Cautioned);
+        assert_eq!(Outcome::of_batch(&[]), Done);
+    }
+
+    #[test]
+    fn the_colour_is_found_wherever_it_stands() {
+        let asked = |words: &[&str]| asked(&words.iter().map(OsString::from).collect::<Vec<_>>());
+        assert_eq!(
+            asked(&["ringsum", "list", "--color", "never"]),
+            Color::Never
+        );
+        assert_eq!(asked(&["ringsum", "--color=always"]), Color::Always);
+        assert_eq!(asked(&["ringsum", "--color"]), Color::Auto);
+        assert_eq!(asked(&["ringsum", "--color=pink"]), Color::Auto);
+    }
+}

@@ -1,0 +1,171 @@
+//! `estimate`: joint files to thermal resistance, with the planes of every number.
+
+use crate::{
+    cli::{
+        chain::{self, Options},
+        check,
+        console::{Console, Layout, Outcome, Trouble},
+        input,
+    },
+    estimate::{self, RingRow},
+    report::{
+        json,
+        text::{self, Detail},
+    },
+};
+use clap::Args;
+use std::path::{Path, PathBuf};
+
+const EXAMPLES: &str = "\
+Examples:
+  ringsum estimate joint.toml
+  ringsum estimate joint.toml --set 'fastener.torque.value=\"2 N·m\"'
+  ringsum estimate joints/*.toml --json --strict";
+
+/// Thermal resistance of joints: low, nominal and high, with the planes of every number
+#[derive(Debug, Args)]
+#[command(after_help = EXAMPLES)]
+#[expect(
+    clippy::struct_excessive_bools,
+    reason = "each is a flag of its own on the command line"
+)]
+pub struct Estimate {
+    /// Joint files; - reads standard input
+    #[arg(required = true, value_name = "FILE")]
+    files: Vec<PathBuf>,
+    /// Pressure field between the faces: cone
+    #[arg(long, value_name = "FIELD", default_value = "cone", value_parser = field)]
+    field: String,
+    #[command(flatten)]
+    draws: Draws,
+    /// Override a field: --set 'plate.box.thickness="6 mm"'
+    #[arg(long = "set", value_name = "KEY=VALUE")]
+    sets: Vec<String>,
+    /// Leave out the list of assumptions
+    #[arg(long)]
+    brief: bool,
+    /// Add the rings around every bolt
+    #[arg(long)]
+    rings: bool,
+    /// Print one JSON object per file, in SI
+    #[arg(long)]
+    json: bool,
+    /// Exit with 3 when there are cautions
+    #[arg(long)]
+    strict: bool,
+}
+
+/// How the low and the high are found.
+#[derive(Clone, Copy, Debug, Args)]
+pub struct Draws {
+    /// Joints drawn for low and high; 0 gives the nominal alone
+    #[arg(long, value_name = "N", default_value_t = 1024,
+          value_parser = clap::value_parser!(u32).range(0..=1_048_576))]
+    pub draws: u32,
+    /// Seed of the draws
+    #[arg(long, value_name = "N", default_value_t = 1)]
+    pub seed: u64,
+}
+
+/// The fields of this build.
+fn field(name: &str) -> Result<String, String> {
+    match name {
+        "cone" => Ok(name.to_owned()),
+        "elastic" => Err("this build has no elastic field; it has `cone`".to_owned()),
+        _ => Err("this build has the field `cone`".to_owned()),
+    }
+}
+
+impl Estimate {
+    /// Estimates every file, also after one at fault.
+    pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
+        input::stdin_at_most_once(&self.files)?;
+        let mut outcomes = Vec::new();
+        for (index, path) in self.files.iter().enumerate() {
+            if !self.json && self.files.len() > 1 {
+                let gap = if index > 0 { "\n" } else { "" };
+                console.result(&format!("{gap}{}:\n", input::name(path)))?;
+            }
+            outcomes.push(match self.one(path, console) {
+                Ok(outcome) => outcome,
+                Err(Trouble::Output(fault)) => return Err(Trouble::Output(fault)),
+                Err(trouble) => {
+                    console.trouble(&trouble);
+                    trouble.outcome()
+                }
+            });
+        }
+        Ok(Outcome::of_batch(&outcomes))
+    }
+
+    fn one(&self, path: &Path, console: &mut Console) -> Result<Outcome, Trouble> {
+        let layout = Layout::of_batch(self.files.len());
+        let (source, joint) = match check::read(path, &self.sets, console) {
+            Ok(read) => read,
+            Err(refused) => {
+                if self.json {
+                    console.json(&refused.json(), layout)?;
+                }
+                return Err(refused.trouble());
+            }
+        };
+        let options = Options {
+            draws: self.draws.draws,
+            seed: self.draws.seed,
+        };
+        let found = chain::estimate(&joint, &options).and_then(|estimate| {
+            let rings = if self.rings {
+                chain::ring_tables(&joint)?
+            } else {
+                Vec::new()
+            };
+            Ok((estimate, rings))
+        });
+        match found {
+            Ok((estimate, rings)) => {
+                self.tell(&source.name, (&estimate, &rings), console)?;
+                Ok(if self.strict && !estimate.cautions.is_empty() {
+                    Outcome::Cautioned
+                } else {
+                    Outcome::Done
+                })
+            }
+            Err(Trouble::Failure(message)) => {
+                if self.json {
+                    let object = serde_json::json!({
+                        "file": source.name, "ok": false, "failure": message,
+                    });
+                    console.json(&object, layout)?;
+                }
+                Err(Trouble::Failure(format!("{}: {message}", source.name)))
+            }
+            Err(trouble) => Err(trouble),
+        }
+    }
+
+    fn tell(
+        &self,
+        name: &str,
+        (estimate, rings): (&estimate::Estimate, &[Vec<RingRow>]),
+        console: &mut Console,
+    ) -> Result<(), Trouble> {
+        if self.json {
+            let mut object = json::estimate(estimate);
+            object["file"] = name.into();
+            if self.rings {
+                object["rings"] = json::rings(rings);
+            }
+            console.json(&object, Layout::of_batch(self.files.len()))?;
+            return Ok(());
+        }
+        let detail = if self.brief {
+            Detail::Brief
+        } else {
+            Detail::Full
+        };
+        let mut report = text::painted(&text::estimate_at(estimate, detail));
+        report.push_str(&text::rings(rings));
+        console.result(&report)?;
+        Ok(())
+    }
+}

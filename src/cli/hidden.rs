@@ -1,0 +1,65 @@
+//! Commands for packagers and editors: completions, manual pages, the schema of the joint file.
+
+use crate::cli::{
+    Cli, chain,
+    console::{Console, Layout, Outcome, Trouble},
+};
+use clap::{Args, CommandFactory};
+
+/// Print completions for a shell
+#[derive(Debug, Args)]
+pub struct Completions {
+    /// The shell
+    shell: clap_complete::Shell,
+}
+
+impl Completions {
+    /// Prints the completions.
+    pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
+        let mut bytes = Vec::new();
+        clap_complete::generate(self.shell, &mut Cli::command(), "ringsum", &mut bytes);
+        console.result(&String::from_utf8_lossy(&bytes))?;
+        Ok(Outcome::Done)
+    }
+}
+
+/// Print the manual page of the program or of one command
+#[derive(Debug, Args)]
+pub struct Man {
+    /// The command
+    command: Option<String>,
+}
+
+impl Man {
+    /// Prints the page.
+    pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
+        let mut program = Cli::command();
+        // Building fills the names of the commands, `ringsum-estimate`.
+        program.build();
+        let page = match &self.command {
+            None => program,
+            Some(name) => program.find_subcommand(name).cloned().ok_or_else(|| {
+                Trouble::usage(
+                    format!("there is no command `{name}`"),
+                    "`ringsum --help` lists them",
+                )
+            })?,
+        };
+        let mut bytes = Vec::new();
+        clap_mangen::Man::new(page).render(&mut bytes)?;
+        console.result(&String::from_utf8_lossy(&bytes))?;
+        Ok(Outcome::Done)
+    }
+}
+
+/// Print the JSON Schema of the joint file
+#[derive(Debug, Args)]
+pub struct Schema {}
+
+impl Schema {
+    /// Prints the schema.
+    pub fn run(console: &mut Console) -> Result<Outcome, Trouble> {
+        console.json(&chain::schema(), Layout::Indented)?;
+        Ok(Outcome::Done)
+    }
+}

@@ -1,0 +1,183 @@
+//! Joint files as text: found, small enough, UTF-8.
+
+use crate::{
+    cli::{chain, console::Trouble},
+    diagnostic::Fault,
+    report::number::plain,
+};
+use std::{
+    fs,
+    io::{self, IsTerminal, Read},
+    path::{Path, PathBuf},
+};
+
+/// Largest joint file, bytes. A joint is a page of text; anything larger is a mistake.
+const LARGEST: u64 = 10_000_000;
+
+/// A joint file as read.
+#[derive(Debug)]
+pub struct Source {
+    /// How messages call it: the path, or `<stdin>`.
+    pub name: String,
+    /// Its text.
+    pub text: String,
+}
+
+/// How messages call a path.
+pub fn name(path: &Path) -> String {
+    if is_stdin(path) {
+        "<stdin>".to_owned()
+    } else {
+        plain(&path.display().to_string())
+    }
+}
+
+/// Standard input can be read once only.
+pub fn stdin_at_most_once(paths: &[PathBuf]) -> Result<(), Trouble> {
+    if paths.iter().filter(|path| is_stdin(path)).count() > 1 {
+        return Err(Trouble::usage(
+            "`-` is named more than once, but standard input can be read once only",
+            "write one of the joints to a file",
+        ));
+    }
+    Ok(())
+}
+
+/// Whether someone would have to type the joint.
+pub fn waits_for_keyboard(path: &Path) -> bool {
+    is_stdin(path) && io::stdin().is_terminal()
+}
+
+/// The text of a joint file, or the fault that explains why there is none.
+pub fn read(path: &Path) -> Result<Source, Fault> {
+    let name = name(path);
+    let bytes = if is_stdin(path) {
+        limited(io::stdin().lock())
+    } else {
+        if path.is_dir() {
+            return Err(fault(
+                "file/unreadable",
+                format!("`{name}` is a folder, not a joint file"),
+                joints(path)
+                    .first()
+                    .map(|name| format!("name a file in it: {}", path.join(name).display())),
+            ));
+        }
+        fs::File::open(path).and_then(limited)
+    }
+    .map_err(|found| unreadable(path, &found))?;
+    if bytes.len() as u64 > LARGEST {
+        return Err(fault(
+            "file/too-large",
+            format!("`{name}` is larger than 10 MB; a joint file is a page of text"),
+            None,
+        ));
+    }
+    let text = String::from_utf8(bytes).map_err(|found| not_utf8(&name, found.as_bytes()))?;
+    if text
+        .trim_matches(|letter: char| letter.is_whitespace() || letter == '\u{feff}')
+        .is_empty()
+    {
+        return Err(fault(
+            "file/empty",
+            format!("`{name}` is empty"),
+            Some("`ringsum new` prints a starter joint".to_owned()),
+        ));
+    }
+    Ok(Source { name, text })
+}
+
+fn is_stdin(path: &Path) -> bool {
+    path == Path::new("-")
+}
+
+/// One byte more than allowed is enough to know.
+fn limited(source: impl Read) -> io::Result<Vec<u8>> {
+    let mut bytes = Vec::new();
+    source.take(LARGEST + 1).read_to_end(&mut bytes)?;
+    Ok(bytes)
+}
+
+fn fault(code: &'static str, message: String, help: Option<String>) -> Fault {
+    Fault {
+        code,
+        message,
+        span: 0..0,
+        expected: String::new(),
+        help,
+    }
+}
+
+fn unreadable(path: &Path, found: &io::Error) -> Fault {
+    let name = name(path);
+    if found.kind() == io::ErrorKind::NotFound {
+        let help = neighbour(path).map_or_else(
+            || format!("`ringsum new {name}` writes a starter joint"),
+            |near| format!("did you mean `{}`?", near.display()),
+        );
+        return fault(
+            "file/not-found",
+            format!("there is no file `{name}`"),
+            Some(help),
+        );
+    }
+    fault(
+        "file/unreadable",
+        format!("`{name}` cannot be read: {found}"),
+        None,
+    )
+}
+
+/// A joint file in the same folder whose name is close.
+fn neighbour(path: &Path) -> Option<PathBuf> {
+    let folder = match path.parent() {
+        Some(parent) if parent != Path::new("") => parent,
+        _ => Path::new("."),
+    };
+    let wanted = path.file_name()?.to_str()?;
+    let names = joints(folder);
+    let with_ending = format!("{wanted}.toml");
+    let near = if names.contains(&with_ending) {
+        with_ending
+    } else {
+        chain::nearest(wanted, &names)?
+    };
+    Some(path.with_file_name(near))
+}
+
+/// The joint files of a folder, in order.
+fn joints(folder: &Path) -> Vec<String> {
+    let Ok(entries) = fs::read_dir(folder) else {
+        return Vec::new();
+    };
+    let mut names: Vec<String> = entries
+        .filter_map(|entry| entry.ok()?.file_name().into_string().ok())
+        .filter(|name| Path::new(name).extension().is_some_and(|end| end == "toml"))
+        .collect();
+    names.sort();
+    names
+}
+
+fn not_utf8(name: &str, bytes: &[u8]) -> Fault {
+    let help = "save it as UTF-8; µ and · may also be written u and *".to_owned();
+    if bytes.starts_with(&[0xFF, 0xFE]) || bytes.starts_with(&[0xFE, 0xFF]) {
+        return fault(
+            "file/not-utf8",
+            format!("`{name}` is UTF-16, not UTF-8"),
+            Some(help),
+        );
+    }
+    let good = std::str::from_utf8(bytes).map_or_else(|found| found.valid_up_to(), str::len);
+    let line = String::from_utf8_lossy(&bytes[..good])
+        .matches('\n')
+        .count()
+        + 1;
+    let found = bytes.get(good).map_or_else(String::new, |byte| {
+        format!(": byte 0x{byte:02X} on line {line}")
+    });
+    fault(
+        "file/not-utf8",
+        format!("`{name}` is not UTF-8 text{found}"),
+        Some(help),
+    )
+}

@@ -1,0 +1,101 @@
+//! `list`: the catalogue by name.
+
+use crate::{
+    cli::{
+        chain,
+        console::{Console, Layout, Outcome, Trouble},
+    },
+    report::{
+        listing::{self, Listing, folded},
+        table::{Side, aligned},
+    },
+};
+use clap::Args;
+
+/// Show the catalogue: materials, finishes, threads, grades, fillers and more
+#[derive(Debug, Args)]
+pub struct List {
+    /// Kind of record; without one the kinds are listed
+    kind: Option<String>,
+    /// Words that must all occur in a record
+    filter: Vec<String>,
+    /// Print JSON, in SI, with the source of every value
+    #[arg(long)]
+    json: bool,
+}
+
+impl List {
+    /// Lists the kinds, one kind, or whatever answers to the words.
+    pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
+        let all = chain::listings();
+        let Some(first) = self.kind else {
+            if self.json {
+                console.json(&listing::json(&all), Layout::Indented)?;
+            } else {
+                console.result(&kinds(&all))?;
+            }
+            return Ok(Outcome::Done);
+        };
+        let names: Vec<String> = all.iter().map(|each| each.kind.to_owned()).collect();
+        let named = |listing: &Listing| {
+            let (kind, word) = (folded(listing.kind), folded(&first));
+            kind == word || kind == format!("{word}s") || kind == format!("{word}es")
+        };
+        // A first word that is no kind is looked for in every kind.
+        let (mut chosen, words): (Vec<Listing>, Vec<String>) = if all.iter().any(named) {
+            (all.into_iter().filter(named).collect(), self.filter)
+        } else {
+            let mut words = vec![first.clone()];
+            words.extend(self.filter);
+            (all, words)
+        };
+        for each in &mut chosen {
+            each.items.retain(|item| item.answers(&words));
+        }
+        chosen.retain(|each| !each.items.is_empty());
+        if chosen.is_empty() {
+            let near = chain::nearest(&first, &names);
+            return Err(Trouble::usage(
+                format!("nothing in the catalogue answers to `{}`", words.join(" ")),
+                near.map_or_else(
+                    || format!("kinds: {}", names.join(", ")),
+                    |near| format!("did you mean the kind `{near}`?"),
+                ),
+            ));
+        }
+        if self.json {
+            console.json(&listing::json(&chosen), Layout::Indented)?;
+        } else {
+            let tables: Vec<String> = chosen.iter().map(listing::text).collect();
+            console.result(&tables.join("\n"))?;
+        }
+        Ok(Outcome::Done)
+    }
+}
+
+fn kinds(all: &[Listing]) -> String {
+    let rows: Vec<Vec<String>> = all
+        .iter()
+        .map(|each| {
+            let some: Vec<&str> = each
+                .items
+                .iter()
+                .take(4)
+                .filter_map(|item| item.cells.first().map(String::as_str))
+                .collect();
+            vec![
+                each.kind.to_owned(),
+                each.items.len().to_string(),
+                some.join(", "),
+            ]
+        })
+        .collect();
+    aligned(
+        &[
+            ("kind", Side::Left),
+            ("records", Side::Right),
+            ("such as", Side::Left),
+        ],
+        &rows,
+    )
+}

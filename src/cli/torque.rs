@@ -1,0 +1,117 @@
+//! `torque`: resistance against torque, and the window that strength allows.
+
+use crate::{
+    cli::{
+        chain::{self, Encoding, SweepOptions},
+        check,
+        console::{Console, Layout, Outcome, Trouble},
+        estimate::Draws,
+        output::{Existing, Target},
+    },
+    report::{json, sweep},
+};
+use clap::Args;
+use std::path::{Path, PathBuf};
+
+/// Resistance against torque, with the torque that strength allows
+#[derive(Debug, Args)]
+pub struct Torque {
+    /// Joint file; - reads standard input
+    file: PathBuf,
+    /// Lowest torque, with its unit: "0.5 N·m"
+    #[arg(long, value_name = "TORQUE", value_parser = chain::torque)]
+    from: Option<f64>,
+    /// Highest torque, with its unit
+    #[arg(long, value_name = "TORQUE", value_parser = chain::torque)]
+    to: Option<f64>,
+    /// Number of torques
+    #[arg(long, value_name = "N", default_value_t = 13,
+          value_parser = clap::value_parser!(u32).range(2..=1000))]
+    steps: u32,
+    /// Fastener group whose torque is varied, counted from 1 in file order
+    #[arg(long, value_name = "N", default_value_t = 1,
+          value_parser = clap::value_parser!(u32).range(1..))]
+    group: u32,
+    #[command(flatten)]
+    draws: Draws,
+    /// Override a field: --set 'plate.box.thickness="6 mm"'
+    #[arg(long = "set", value_name = "KEY=VALUE")]
+    sets: Vec<String>,
+    /// Print JSON, in SI
+    #[arg(long)]
+    json: bool,
+    /// Draw the curve to a file that ends in .svg or .png
+    #[arg(long, value_name = "FIGURE")]
+    out: Option<PathBuf>,
+    /// Replace the figure if it exists
+    #[arg(long)]
+    force: bool,
+}
+
+impl Torque {
+    /// Sweeps the torque; checks the target of the figure before computing.
+    pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
+        if let (Some(from), Some(to)) = (self.from, self.to)
+            && from >= to
+        {
+            return Err(Trouble::usage(
+                "--from must be less than --to",
+                "swap the two torques",
+            ));
+        }
+        let figure = match &self.out {
+            Some(path) => Some((
+                encoding(path)?,
+                Target::new(path, Existing::from_force(self.force))?,
+            )),
+            None => None,
+        };
+        let (_, joint) =
+            check::read(&self.file, &self.sets, console).map_err(|refused| refused.trouble())?;
+        let groups = joint.fasteners.len();
+        if self.group as usize > groups {
+            return Err(Trouble::usage(
+                format!(
+                    "there is no fastener group {}; the joint has {groups}",
+                    self.group
+                ),
+                "count the [fastener] tables from 1",
+            ));
+        }
+        let options = SweepOptions {
+            group: self.group as usize - 1,
+            from: self.from,
+            to: self.to,
+            steps: self.steps as usize,
+            draws: self.draws.draws,
+            seed: self.draws.seed,
+        };
+        let found = chain::torque_sweep(&joint, &options)?;
+        if let Some((encoding, target)) = figure {
+            target.write(&chain::torque_figure(&found, encoding)?)?;
+            console.message(&format!("wrote {}\n", target.path.display()));
+        }
+        if self.json {
+            console.json(&json::torque(&found), Layout::Indented)?;
+        } else {
+            console.result(&sweep::torque(&found))?;
+        }
+        Ok(Outcome::Done)
+    }
+}
+
+fn encoding(path: &Path) -> Result<Encoding, Trouble> {
+    let ending = path
+        .extension()
+        .and_then(|ending| ending.to_str())
+        .unwrap_or("")
+        .to_ascii_lowercase();
+    match ending.as_str() {
+        "svg" => Ok(Encoding::Svg),
+        "png" => Ok(Encoding::Png),
+        _ => Err(Trouble::usage(
+            format!("`{}` ends in neither .svg nor .png", path.display()),
+            "the ending chooses the format of the figure",
+        )),
+    }
+}

@@ -1,0 +1,73 @@
+//! Catalogue records as rows for `list`: working units in the table, SI and sources in JSON.
+
+mod fasteners;
+mod media;
+mod plates;
+
+pub use fasteners::{friction, grades, holes, methods, seats, threads};
+pub use media::{fillers, gases, platings};
+pub use plates::{finishes, materials};
+
+use crate::{
+    catalog::{Datum, Status},
+    report::{number::four, table::Side},
+};
+use serde_json::{Value, json};
+
+/// A heading of words.
+fn words(heading: &'static str) -> (&'static str, Side) {
+    (heading, Side::Left)
+}
+
+/// A heading of numbers.
+fn numbers(heading: &'static str) -> (&'static str, Side) {
+    (heading, Side::Right)
+}
+
+/// A value in a working unit; a star marks one given from memory.
+fn shown(datum: &Datum, unit: f64) -> String {
+    let mark = if datum.status == Status::Memory {
+        "*"
+    } else {
+        ""
+    };
+    format!("{}{mark}", four(datum.value / unit))
+}
+
+/// The same, or a dash.
+fn shown_if(datum: Option<&Datum>, unit: f64) -> String {
+    datum.map_or_else(|| "–".to_owned(), |datum| shown(datum, unit))
+}
+
+/// A value with everything known about it, SI.
+fn datum(datum: &Datum) -> Value {
+    json!({
+        "value": datum.value,
+        "range": datum.range,
+        "status": status(datum.status),
+        "source": datum.source,
+    })
+}
+
+fn datum_if(value: Option<&Datum>) -> Value {
+    value.map_or(Value::Null, datum)
+}
+
+fn status(status: Status) -> &'static str {
+    match status {
+        Status::Seen => "seen",
+        Status::Memory => "from memory",
+        Status::Computed => "computed",
+        Status::Judgement => "judgement",
+        Status::User => "user",
+    }
+}
+
+/// A star after a name whose whole record is from memory.
+fn starred(name: &str, of: Status) -> String {
+    if of == Status::Memory {
+        format!("{name}*")
+    } else {
+        name.to_owned()
+    }
+}

@@ -1,0 +1,241 @@
+//! Threads, grades, heads, holes, friction, tightening methods.
+
+use crate::{
+    catalog::{ClearanceHole, FrictionRecord, Grade, MethodRecord, SeatRecord, Thread},
+    report::{
+        catalogue::{datum, datum_if, numbers, shown, shown_if, starred, status, words},
+        listing::{Item, Listing},
+        number::{four, optional, percent, wrapped},
+    },
+};
+use serde_json::json;
+
+/// Threads.
+pub fn threads(records: &[Thread]) -> Listing {
+    Listing {
+        kind: "threads",
+        headings: vec![
+            words("name"),
+            numbers("diameter\nmm"),
+            numbers("pitch\nmm"),
+            numbers("pitch diameter\nmm"),
+            numbers("stress area\nmm²"),
+        ],
+        items: records
+            .iter()
+            .map(|record| Item {
+                cells: vec![
+                    record.name.clone(),
+                    four(record.diameter * 1e3),
+                    four(record.pitch * 1e3),
+                    four(record.pitch_diameter * 1e3),
+                    four(record.stress_area * 1e6),
+                ],
+                keywords: if record.inch {
+                    "inch unified"
+                } else {
+                    "metric ISO"
+                }
+                .to_owned(),
+                record: json!({
+                    "name": record.name,
+                    "inch": record.inch,
+                    "diameter": record.diameter,
+                    "pitch": record.pitch,
+                    "pitch_diameter": record.pitch_diameter,
+                    "minor_diameter": record.minor_diameter,
+                    "nut_minor_diameter": record.nut_minor_diameter,
+                    "stress_diameter": record.stress_diameter,
+                    "stress_area": record.stress_area,
+                }),
+            })
+            .collect(),
+    }
+}
+
+/// Strength grades.
+pub fn grades(records: &[Grade]) -> Listing {
+    Listing {
+        kind: "grades",
+        headings: vec![
+            words("name"),
+            words("standard"),
+            numbers("tensile\nMPa"),
+            numbers("yield\nMPa"),
+            numbers("proof\nMPa"),
+            words("bolt material"),
+        ],
+        items: records
+            .iter()
+            .map(|record| Item {
+                cells: vec![
+                    record.name.clone(),
+                    record.standard.clone(),
+                    shown(&record.tensile, 1e6),
+                    shown_if(record.yield_strength.as_ref(), 1e6),
+                    shown_if(record.proof.as_ref(), 1e6),
+                    record.like.clone(),
+                ],
+                keywords: String::new(),
+                record: json!({
+                    "name": record.name,
+                    "standard": record.standard,
+                    "tensile": datum(&record.tensile),
+                    "yield_strength": datum_if(record.yield_strength.as_ref()),
+                    "proof": datum_if(record.proof.as_ref()),
+                    "youngs_modulus": record.youngs_modulus,
+                    "expansion": record.expansion,
+                    "conductivity": datum(&record.conductivity),
+                    "like": record.like,
+                }),
+            })
+            .collect(),
+    }
+}
+
+/// Heads, nuts and washers as seats.
+pub fn seats(records: &[SeatRecord]) -> Listing {
+    Listing {
+        kind: "seats",
+        headings: vec![
+            words("kind"),
+            words("thread"),
+            words("standard"),
+            numbers("outer\nmm"),
+            numbers("inner\nmm"),
+            numbers("height\nmm"),
+        ],
+        items: records
+            .iter()
+            .map(|record| Item {
+                cells: vec![
+                    starred(&record.kind, record.status),
+                    record.thread.clone(),
+                    record.standard.clone(),
+                    four(record.outer * 1e3),
+                    optional(record.inner.map(|inner| inner * 1e3)),
+                    optional(record.height.map(|height| height * 1e3)),
+                ],
+                keywords: "head".to_owned(),
+                record: json!({
+                    "kind": record.kind,
+                    "standard": record.standard,
+                    "thread": record.thread,
+                    "outer": record.outer,
+                    "inner": record.inner,
+                    "height": record.height,
+                    "status": status(record.status),
+                    "source": record.source,
+                }),
+            })
+            .collect(),
+    }
+}
+
+/// Clearance holes.
+pub fn holes(records: &[ClearanceHole]) -> Listing {
+    Listing {
+        kind: "holes",
+        headings: vec![
+            words("thread"),
+            words("standard"),
+            numbers("fine\nmm"),
+            numbers("medium\nmm"),
+            numbers("coarse\nmm"),
+        ],
+        items: records
+            .iter()
+            .map(|record| {
+                let mut cells = vec![record.thread.clone(), record.standard.clone()];
+                cells.extend(record.diameters.map(|diameter| four(diameter * 1e3)));
+                Item {
+                    cells,
+                    keywords: String::new(),
+                    record: json!({
+                        "thread": record.thread,
+                        "standard": record.standard,
+                        "fine": record.diameters[0],
+                        "medium": record.diameters[1],
+                        "coarse": record.diameters[2],
+                        "source": record.source,
+                    }),
+                }
+            })
+            .collect(),
+    }
+}
+
+/// Friction classes and nut factors.
+pub fn friction(records: &[FrictionRecord]) -> Listing {
+    Listing {
+        kind: "friction",
+        headings: vec![
+            words("name"),
+            words("of"),
+            numbers("low"),
+            numbers("nominal"),
+            numbers("high"),
+            words("stands for"),
+        ],
+        items: records
+            .iter()
+            .map(|record| {
+                let quantity = if record.nut_factor { "K" } else { "µ" };
+                let mut cells = vec![starred(&record.name, record.status), quantity.to_owned()];
+                cells.extend(record.values.map(four));
+                cells.push(wrapped(&record.describes, 44, 0));
+                Item {
+                    cells,
+                    keywords: if record.nut_factor {
+                        "nut factor"
+                    } else {
+                        "coefficient"
+                    }
+                    .to_owned(),
+                    record: json!({
+                        "name": record.name,
+                        "quantity": if record.nut_factor { "nut factor" } else { "coefficient" },
+                        "low": record.values[0],
+                        "nominal": record.values[1],
+                        "high": record.values[2],
+                        "describes": record.describes,
+                        "status": status(record.status),
+                        "source": record.source,
+                    }),
+                }
+            })
+            .collect(),
+    }
+}
+
+/// Tightening methods.
+pub fn methods(records: &[MethodRecord]) -> Listing {
+    Listing {
+        kind: "methods",
+        headings: vec![
+            words("name"),
+            words("family"),
+            numbers("scatter ±\nleast"),
+            numbers("scatter ±\nmost"),
+        ],
+        items: records
+            .iter()
+            .map(|record| Item {
+                cells: vec![
+                    starred(&record.name, record.status),
+                    record.family.clone(),
+                    percent(record.scatter[0]),
+                    percent(record.scatter[1]),
+                ],
+                keywords: "tightening".to_owned(),
+                record: json!({
+                    "name": record.name,
+                    "family": record.family,
+                    "scatter": record.scatter,
+                    "status": status(record.status),
+                    "source": record.source,
+                }),
+            })
+            .collect(),
+    }
+}

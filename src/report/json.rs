@@ -1,0 +1,261 @@
+//! Results as JSON: a contract whose keys may be added to, never changed. SI, unrounded.
+
+use crate::{
+    diagnostic::{Assumption, Caution},
+    estimate::{
+        Band, BoltResult, CaseResult, Estimate, Met, PlaneResult, RequirementResult, RingRow,
+        TorqueSweep,
+    },
+    joint::{Limit, Plane, RequirementKind},
+    report::number::inverse,
+};
+use serde_json::{Map, Value, json};
+
+/// Number of the file format and of this contract.
+pub const FORMAT: u32 = 1;
+
+/// Everything `estimate` found. A value that does not apply is null, as is one that is not finite.
+pub fn estimate(estimate: &Estimate) -> Value {
+    let mut object = estimate.cases.first().map_or_else(Map::new, case);
+    // One case is told once, at the top level; the list is for hot beside cold.
+    let cases: Vec<Value> = if estimate.cases.len() > 1 {
+        estimate
+            .cases
+            .iter()
+            .map(|each| Value::Object(case(each)))
+            .collect()
+    } else {
+        Vec::new()
+    };
+    for (key, value) in [
+        ("ringsum", json!(env!("CARGO_PKG_VERSION"))),
+        ("format", json!(FORMAT)),
+        ("title", json!(estimate.title)),
+        ("seed", json!(estimate.seed)),
+        ("draws", json!(estimate.draws)),
+        ("field", json!(estimate.field)),
+        ("resolution", json!(estimate.resolution)),
+        (
+            "planes",
+            json!({ "source": estimate.source_plane, "sink": estimate.sink_plane }),
+        ),
+        ("heat", json!(estimate.heat)),
+        ("cases", json!(cases)),
+        ("cautions", cautions(&estimate.cautions)),
+        ("assumptions", assumptions(&estimate.assumptions)),
+    ] {
+        object.insert(key.to_owned(), value);
+    }
+    Value::Object(object)
+}
+
+/// The part of the contract that one thermal case fills.
+fn case(case: &CaseResult) -> Map<String, Value> {
+    let results = &case.results;
+    let pressure = &case.pressure;
+    let mut object = Map::new();
+    for (key, value) in [
+        ("case", json!(case.name)),
+        ("sink_temperature", json!(case.sink_temperature)),
+        ("bolts", case.bolts.iter().map(bolt).collect()),
+        (
+            "pressure",
+            json!({
+                "peak": pressure.peak,
+                "contact_area": pressure.contact_area,
+                "radius_95": pressure.radius_95,
+                "force": pressure.force,
+                "gap_max": pressure.gap_max,
+                "gap_mean": pressure.gap_mean,
+            }),
+        ),
+        ("footprint", json!(case.footprint)),
+        (
+            "results",
+            json!({
+                "contact": plane(&results.contact, case.footprint),
+                "node_to_node": plane(&results.node_to_node, case.footprint),
+                "added_by_joint": plane(&results.added_by_joint, case.footprint),
+                "source_to_sink": plane(&results.source_to_sink, case.footprint),
+                "perfect_contact": plane(&results.perfect_contact, case.footprint),
+            }),
+        ),
+        (
+            "bounds",
+            json!({
+                "resistance_lower": case.resistance_lower,
+                "resistance_upper": case.resistance_upper,
+            }),
+        ),
+        ("numerical_error", json!(case.numerical_error)),
+        ("rise", rise(case)),
+        (
+            "requirement",
+            case.requirement.as_ref().map_or(Value::Null, requirement),
+        ),
+        (
+            "drivers",
+            case.drivers
+                .iter()
+                .map(|driver| {
+                    json!({ "input": driver.input, "share": driver.share, "remedy": driver.remedy })
+                })
+                .collect(),
+        ),
+    ] {
+        object.insert(key.to_owned(), value);
+    }
+    object
+}
+
+fn bolt(bolt: &BoltResult) -> Value {
+    json!({
+        "at": bolt.at,
+        "force": band(&bolt.force),
+        "force_in_service": band(&bolt.force_in_service),
+        "strength_use": strength_use(bolt.strength_use),
+        "largest_torque": bolt.largest_torque,
+        "contact_radius": bolt.contact_radius,
+        "contact_conductance": bolt.contact_conductance,
+    })
+}
+
+fn strength_use(values: Option<[f64; 2]>) -> Value {
+    values.map_or(
+        Value::Null,
+        |[nominal, high]| json!({ "nominal": nominal, "high": high }),
+    )
+}
+
+fn band(band: &Band) -> Value {
+    json!({ "low": band.low, "nominal": band.nominal, "high": band.high })
+}
+
+fn plane(result: &PlaneResult, footprint: f64) -> Value {
+    let [low, nominal, high] = inverse(&result.resistance);
+    let per_area = |value: Option<f64>| value.map(|value| value / footprint);
+    json!({
+        "resistance": band(&result.resistance),
+        "conductance": { "low": low, "nominal": nominal, "high": high },
+        "conductance_per_area": {
+            "low": per_area(low), "nominal": per_area(nominal), "high": per_area(high),
+        },
+    })
+}
+
+fn rise(case: &CaseResult) -> Value {
+    case.rise.map_or(Value::Null, |rise| {
+        json!({
+            "low": rise.source.low,
+            "nominal": rise.source.nominal,
+            "high": rise.source.high,
+            "hottest": rise.hottest,
+            "interface_drop": rise.interface_drop,
+            "coolant_drop": rise.coolant_drop,
+        })
+    })
+}
+
+fn requirement(requirement: &RequirementResult) -> Value {
+    let (kind, plane) = match requirement.kind {
+        RequirementKind::Rise => ("rise", None),
+        RequirementKind::HottestRise => ("hottest_rise", None),
+        RequirementKind::InterfaceDrop => ("interface_drop", None),
+        RequirementKind::Resistance(plane) => ("resistance", Some(plane)),
+        RequirementKind::Conductance(plane) => ("conductance", Some(plane)),
+    };
+    json!({
+        "kind": kind,
+        "plane": plane.map(plane_key),
+        "limit": requirement.limit,
+        "bound": bound_key(requirement.bound),
+        "value": requirement.value,
+        "met": match requirement.met {
+            Met::Yes => json!(true),
+            Met::No => json!(false),
+            Met::Uncertain => json!("uncertain"),
+        },
+    })
+}
+
+fn plane_key(plane: Plane) -> &'static str {
+    match plane {
+        Plane::Contact => "contact",
+        Plane::NodeToNode => "node_to_node",
+        Plane::AddedByJoint => "added_by_joint",
+        Plane::SourceToSink => "source_to_sink",
+    }
+}
+
+fn bound_key(bound: Limit) -> &'static str {
+    match bound {
+        Limit::Most => "most",
+        Limit::Least => "least",
+    }
+}
+
+fn cautions(cautions: &[Caution]) -> Value {
+    cautions
+        .iter()
+        .map(|caution| json!({ "code": caution.code, "text": caution.text }))
+        .collect()
+}
+
+fn assumptions(assumptions: &[Assumption]) -> Value {
+    assumptions
+        .iter()
+        .map(|each| json!({ "field": each.field, "value": each.value, "why": each.why }))
+        .collect()
+}
+
+/// The rings of every bolt: radii in m, pressure in Pa, conductances in W/(m² K) and W/K.
+pub fn rings(tables: &[Vec<RingRow>]) -> Value {
+    let row = |ring: &RingRow| {
+        json!({
+            "inner_radius": ring.radius[0],
+            "outer_radius": ring.radius[1],
+            "area": ring.area,
+            "pressure": ring.pressure,
+            "conductance_per_area": ring.conductance,
+            "conductance": ring.share,
+            "cumulative": ring.cumulative,
+        })
+    };
+    tables
+        .iter()
+        .map(|rings| rings.iter().map(row).collect::<Value>())
+        .collect()
+}
+
+/// Resistance against torque.
+pub fn torque(sweep: &TorqueSweep) -> Value {
+    let points: Vec<Value> = sweep
+        .points
+        .iter()
+        .map(|point| {
+            json!({
+                "torque": point.torque,
+                "force": band(&point.force),
+                "source_to_sink": { "resistance": band(&point.source_to_sink) },
+                "contact": { "resistance": band(&point.contact) },
+                "added_by_joint": { "resistance": band(&point.added_by_joint) },
+                "strength_use": strength_use(point.strength_use),
+                "passes": point.passes,
+            })
+        })
+        .collect();
+    json!({
+        "ringsum": env!("CARGO_PKG_VERSION"),
+        "format": FORMAT,
+        "title": sweep.title,
+        "group": sweep.group,
+        "stated": sweep.stated,
+        "largest": sweep.largest.map(|(torque, limit)| json!({ "torque": torque, "limit": limit })),
+        "best": sweep.best,
+        "required": sweep.required.map(|(resistance, bound)| {
+            json!({ "resistance": resistance, "bound": bound_key(bound) })
+        }),
+        "points": points,
+        "cautions": cautions(&sweep.cautions),
+    })
+}

@@ -1,0 +1,146 @@
+//! Lists of things by name: catalogue records, codes, faults; as text and as JSON.
+
+use crate::{
+    diagnostic::Fault,
+    report::{
+        json::FORMAT,
+        number::plain,
+        table::{Side, aligned},
+    },
+};
+use serde_json::{Value, json};
+
+/// One kind of catalogue record, ready to be filtered and shown.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Listing {
+    /// Kind, in the plural: `materials`.
+    pub kind: &'static str,
+    /// Headings with the unit and the side of each column.
+    pub headings: Vec<(&'static str, Side)>,
+    /// One item per record.
+    pub items: Vec<Item>,
+}
+
+/// One record.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Item {
+    /// Cells in the order of the headings.
+    pub cells: Vec<String>,
+    /// Words a filter also looks at: aliases, notes, standards.
+    pub keywords: String,
+    /// The whole record in SI.
+    pub record: Value,
+}
+
+impl Item {
+    /// Whether every word occurs in this record; case, spaces and dashes do not matter.
+    pub fn answers(&self, words: &[String]) -> bool {
+        let hay = folded(&format!("{} {}", self.cells.join(" "), self.keywords));
+        words.iter().all(|word| hay.contains(&folded(word)))
+    }
+}
+
+/// Lower case without spaces and dashes: the form in which names are compared.
+pub fn folded(text: &str) -> String {
+    text.chars()
+        .filter(|letter| !letter.is_whitespace() && !matches!(letter, '-' | '_'))
+        .flat_map(char::to_lowercase)
+        .collect()
+}
+
+/// The listing as a table under its kind.
+pub fn text(listing: &Listing) -> String {
+    let rows: Vec<Vec<String>> = listing
+        .items
+        .iter()
+        .map(|item| item.cells.iter().map(|cell| plain(cell)).collect())
+        .collect();
+    let starred = rows.iter().flatten().any(|cell| cell.ends_with('*'));
+    format!(
+        "{} ({})\n{}{}",
+        listing.kind,
+        rows.len(),
+        aligned(&listing.headings, &rows),
+        if starred {
+            "* from memory, not read in a source\n"
+        } else {
+            ""
+        }
+    )
+}
+
+/// The listings as one JSON object, records by kind.
+pub fn json(listings: &[Listing]) -> Value {
+    let mut kinds = serde_json::Map::new();
+    for listing in listings {
+        let records: Vec<&Value> = listing.items.iter().map(|item| &item.record).collect();
+        kinds.insert(listing.kind.to_owned(), json!(records));
+    }
+    json!({ "ringsum": env!("CARGO_PKG_VERSION"), "format": FORMAT, "kinds": kinds })
+}
+
+/// The faults of one file, with line and column counted from 1; `ok` when there are none.
+pub fn faults(path: &str, text: &str, faults: &[Fault]) -> Value {
+    let list: Vec<Value> = faults
+        .iter()
+        .map(|fault| {
+            let (line, column) = place(text, fault.span.start);
+            json!({
+                "code": fault.code,
+                "file": path,
+                "line": line,
+                "column": column,
+                "message": fault.message,
+                "expected": fault.expected,
+                "help": fault.help,
+            })
+        })
+        .collect();
+    json!({
+        "ringsum": env!("CARGO_PKG_VERSION"),
+        "format": FORMAT,
+        "file": path,
+        "ok": faults.is_empty(),
+        "faults": list,
+    })
+}
+
+/// Line and column of a byte, both from 1; the column counts characters.
+pub fn place(text: &str, byte: usize) -> (usize, usize) {
+    let mut end = byte.min(text.len());
+    while !text.is_char_boundary(end) {
+        end -= 1;
+    }
+    let before = &text[..end];
+    let line = before.matches('\n').count() + 1;
+    let start = before.rfind('\n').map_or(0, |at| at + 1);
+    (line, before[start..].chars().count() + 1)
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn a_place_counts_lines_and_characters_from_one() {
+        let text = "a = 1\nµ = \"2 µm\"\n";
+        assert_eq!(place(text, 0), (1, 1));
+        assert_eq!(place(text, text.find('=').unwrap()), (1, 3));
+        assert_eq!(place(text, text.rfind('=').unwrap()), (2, 3));
+        assert_eq!(place(text, 7), (2, 1), "inside the micro sign");
+        assert_eq!(place(text, 999), (3, 1));
+        assert_eq!(place("", 5), (1, 1));
+    }
+
+    #[test]
+    fn a_filter_ignores_case_spaces_and_dashes() {
+        let item = Item {
+            cells: vec!["Al 6061-T6".to_owned()],
+            keywords: "EN AW-6061 T6".to_owned(),
+            record: Value::Null,
+        };
+        assert!(item.answers(&["al6061 t6".to_owned()]));
+        assert!(item.answers(&["AL".to_owned(), "aw".to_owned()]));
+        assert!(!item.answers(&["AL".to_owned(), "7075".to_owned()]));
+    }
+}

@@ -1,0 +1,281 @@
+//! The result of `estimate` for an engineer at a terminal: one screen, units in headings.
+
+use crate::{
+    diagnostic::{Assumption, Caution},
+    estimate::{BoltResult, CaseResult, Estimate, RingRow},
+    report::{
+        number::{band, four, optional, percent, plain, wrapped},
+        table::{Side, aligned},
+    },
+};
+use anstyle::{AnsiColor, Style};
+use std::fmt::Write;
+
+mod thermal;
+
+/// Widest line, characters.
+pub const WIDTH: usize = 100;
+
+/// How much of the report is told.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Detail {
+    /// Everything, with every assumption.
+    Full,
+    /// Assumptions are counted, not listed.
+    Brief,
+}
+
+/// The whole report.
+pub fn estimate(estimate: &Estimate) -> String {
+    estimate_at(estimate, Detail::Full)
+}
+
+/// The report, as long as asked for.
+pub fn estimate_at(estimate: &Estimate, detail: Detail) -> String {
+    let mut parts = vec![heading(estimate)];
+    if let Some(case) = estimate.cases.first() {
+        parts.push(bolts(case));
+        parts.push(thermal::results(case));
+        parts.push(thermal::verdict(estimate, case));
+        if estimate.cases.len() > 1 {
+            parts.push(thermal::cases(estimate));
+        }
+        parts.push(thermal::drivers(&case.drivers));
+    }
+    parts.push(cautions(&estimate.cautions));
+    parts.push(assumptions(&estimate.assumptions, detail));
+    parts.retain(|part| !part.is_empty());
+    parts.join("\n")
+}
+
+fn heading(estimate: &Estimate) -> String {
+    let mut text = format!("{}\n", plain(&estimate.title));
+    for (name, plane) in [
+        ("from", &estimate.source_plane),
+        ("to", &estimate.sink_plane),
+    ] {
+        let line = format!("{name:<6}{}", plain(plane));
+        let _ = writeln!(text, "{}", wrapped_after(&line, 6));
+    }
+    let band = match estimate.draws {
+        0 => "nominal only".to_owned(),
+        draws => format!(
+            "low and high: 5 % and 95 % of {draws} draws, seed {}",
+            estimate.seed
+        ),
+    };
+    let error = estimate
+        .cases
+        .first()
+        .map_or(f64::NAN, |case| case.numerical_error);
+    let _ = writeln!(
+        text,
+        "field {}, {}; {band}; numerical error {}",
+        estimate.field,
+        estimate.resolution,
+        percent(error)
+    );
+    text
+}
+
+/// Wraps behind a label of fixed width, which `wrapped` alone would close up.
+fn wrapped_after(line: &str, label: usize) -> String {
+    let head: String = line.chars().take(label).collect();
+    let rest: String = line.chars().skip(label).collect();
+    let body = wrapped(&rest, WIDTH - label, 0);
+    let indent = format!("\n{}", " ".repeat(label));
+    format!("{head}{}", body.replace('\n', &indent))
+}
+
+/// Clamp force, one row for all bolts that share it.
+fn bolts(case: &CaseResult) -> String {
+    let mut rows = Vec::new();
+    for (name, group) in groups(&case.bolts) {
+        let bolt = group[0];
+        let mut row = vec![name];
+        row.extend(band(&bolt.force, 1e3));
+        row.extend(band(&bolt.force_in_service, 1e3));
+        row.push(
+            bolt.strength_use
+                .map_or_else(|| "–".to_owned(), |each| percent(each[0])),
+        );
+        row.push(
+            bolt.strength_use
+                .map_or_else(|| "–".to_owned(), |each| percent(each[1])),
+        );
+        row.push(optional(bolt.largest_torque));
+        rows.push(row);
+    }
+    let right = Side::Right;
+    let mut text = aligned(
+        &[
+            ("clamp force\nper bolt", Side::Left),
+            ("\nlow", right),
+            ("assembly kN\nnominal", right),
+            ("\nhigh", right),
+            ("\nlow", right),
+            ("service kN\nnominal", right),
+            ("\nhigh", right),
+            ("of yield\nnominal", right),
+            ("\nhighest", right),
+            ("torque N·m\nat most", right),
+        ],
+        &rows,
+    );
+    let pressure = &case.pressure;
+    let _ = write!(
+        text,
+        "pressure: {} MPa at most, contact on {} mm², 95 % of the force within {} mm of a bolt axis",
+        four(pressure.peak / 1e6),
+        four(pressure.contact_area * 1e6),
+        four(pressure.radius_95 * 1e3),
+    );
+    if let (Some(max), Some(mean)) = (pressure.gap_max, pressure.gap_mean) {
+        let _ = write!(
+            text,
+            "; gap {} µm mean, {} µm widest",
+            four(mean * 1e6),
+            four(max * 1e6)
+        );
+    }
+    text.push('\n');
+    text
+}
+
+/// Bolts that share force, strength use and largest torque, with their numbers in file order.
+fn groups(bolts: &[BoltResult]) -> Vec<(String, Vec<&BoltResult>)> {
+    let like = |one: &BoltResult, other: &BoltResult| {
+        one.force == other.force
+            && one.force_in_service == other.force_in_service
+            && one.strength_use == other.strength_use
+            && one.largest_torque == other.largest_torque
+    };
+    let mut runs: Vec<(usize, Vec<&BoltResult>)> = Vec::new();
+    for (index, bolt) in bolts.iter().enumerate() {
+        match runs.last_mut() {
+            Some((_, run)) if like(run[0], bolt) => run.push(bolt),
+            _ => runs.push((index, vec![bolt])),
+        }
+    }
+    runs.into_iter()
+        .map(|(first, run)| {
+            let name = match run.len() {
+                1 => format!("bolt {}", first + 1),
+                count => format!("bolts {} to {}", first + 1, first + count),
+            };
+            (name, run)
+        })
+        .collect()
+}
+
+/// Cautions, most grave first, each with its code for `explain`.
+pub fn cautions(cautions: &[Caution]) -> String {
+    if cautions.is_empty() {
+        return String::new();
+    }
+    let mut text = format!(
+        "cautions ({}); ringsum explain CODE tells more\n",
+        cautions.len()
+    );
+    for caution in cautions {
+        let line = format!("{}: {}", caution.code, plain(&caution.text));
+        let _ = writeln!(
+            text,
+            "  {}",
+            wrapped(&line, WIDTH - 2, 2).replace('\n', "\n  ")
+        );
+    }
+    text
+}
+
+fn assumptions(assumptions: &[Assumption], detail: Detail) -> String {
+    match (assumptions.len(), detail) {
+        (0, _) => return String::new(),
+        (count, Detail::Brief) => return format!("assumptions: {count}, listed without --brief\n"),
+        (_, Detail::Full) => {}
+    }
+    let mut text = format!(
+        "assumptions ({}); state a field in the file to replace one\n",
+        assumptions.len()
+    );
+    for each in assumptions {
+        let line = format!(
+            "{} = {}: {}",
+            each.field,
+            plain(&each.value),
+            plain(&each.why)
+        );
+        let _ = writeln!(
+            text,
+            "  {}",
+            wrapped(&line, WIDTH - 2, 2).replace('\n', "\n  ")
+        );
+    }
+    text
+}
+
+/// The report with colour for a terminal: headings bold, verdicts in green, yellow and red.
+///
+/// The words stay the same, so nothing is lost where colour is stripped.
+pub fn painted(report: &str) -> String {
+    let bold = Style::new().bold();
+    let verdicts = [
+        ("NOT MET", AnsiColor::Red),
+        ("UNCERTAIN", AnsiColor::Yellow),
+        (": MET", AnsiColor::Green),
+    ];
+    let mut text = String::new();
+    let mut opens = true;
+    for line in report.lines() {
+        let verdict = verdicts
+            .iter()
+            .find(|(word, _)| line.starts_with("requirement") && line.contains(word));
+        if let Some((word, color)) = verdict {
+            let style = color.on_default().bold();
+            let marked = line.replacen(word, &format!("{style}{word}{style:#}"), 1);
+            let _ = writeln!(text, "{marked}");
+        } else if opens {
+            let _ = writeln!(text, "{bold}{line}{bold:#}");
+        } else {
+            let _ = writeln!(text, "{line}");
+        }
+        opens = line.is_empty();
+    }
+    text
+}
+
+/// The rings of every bolt.
+pub fn rings(tables: &[Vec<RingRow>]) -> String {
+    let right = Side::Right;
+    let mut text = String::new();
+    for (index, rings) in tables.iter().enumerate() {
+        let rows: Vec<Vec<String>> = rings
+            .iter()
+            .map(|ring| {
+                vec![
+                    four(ring.radius[0] * 1e3),
+                    four(ring.radius[1] * 1e3),
+                    four(ring.area * 1e6),
+                    four(ring.pressure / 1e6),
+                    four(ring.conductance),
+                    four(ring.share),
+                    four(ring.cumulative),
+                ]
+            })
+            .collect();
+        let _ = writeln!(text, "\nrings around bolt {}", index + 1);
+        text.push_str(&aligned(
+            &[
+                ("from\nmm", right),
+                ("to\nmm", right),
+                ("area\nmm²", right),
+                ("pressure\nMPa", right),
+                ("local\nW/(m²·K)", right),
+                ("ring\nW/K", right),
+                ("sum\nW/K", right),
+            ],
+            &rows,
+        ));
+    }
+    text
+}

@@ -1,0 +1,242 @@
+//! The thermal part of the report: results with their planes, verdict, cases, drivers.
+
+use crate::{
+    estimate::{Band, CaseResult, Driver, Estimate, Met, RequirementResult},
+    joint::{Limit, Plane, RequirementKind},
+    report::{
+        number::{band, four, inverse, optional, spread, wrapped},
+        table::{Side, aligned},
+        text::{WIDTH, wrapped_after},
+    },
+};
+use std::fmt::Write;
+
+/// 0 °C, K.
+const ICE_POINT: f64 = 273.15;
+
+/// The results with their planes: contact only and with spreading, never one for the other.
+pub fn results(case: &CaseResult) -> String {
+    let results = &case.results;
+    let rows: Vec<Vec<String>> = [
+        (
+            "contact only",
+            &results.contact,
+            "finishes, fillers, torque",
+        ),
+        ("node to node", &results.node_to_node, "one node per plate"),
+        (
+            "added by joint",
+            &results.added_by_joint,
+            "what the joint costs",
+        ),
+        ("source to sink", &results.source_to_sink, "the requirement"),
+        (
+            "perfect contact",
+            &results.perfect_contact,
+            "the floor: no interface",
+        ),
+    ]
+    .into_iter()
+    .map(|(name, result, purpose)| {
+        let mut row = vec![name.to_owned()];
+        row.extend(band(&result.resistance, 1.0));
+        row.extend(inverse(&result.resistance).map(optional));
+        row.push(purpose.to_owned());
+        row
+    })
+    .collect();
+    let right = Side::Right;
+    let mut text = aligned(
+        &[
+            ("thermal result", Side::Left),
+            ("K/W\nlow", right),
+            ("K/W\nnominal", right),
+            ("K/W\nhigh", right),
+            ("W/K\nlow", right),
+            ("W/K\nnominal", right),
+            ("W/K\nhigh", right),
+            ("\nuse it for", Side::Left),
+        ],
+        &rows,
+    );
+    text.push_str(
+        "Contact only leaves out how heat spreads to the bolts; all other rows hold that spreading.\n",
+    );
+    text.push_str(&scaled(case));
+    text.push_str(&bounds(case));
+    text
+}
+
+/// The conductances per area and per bolt, for those who must compare.
+fn scaled(case: &CaseResult) -> String {
+    let nominal = |resistance: &Band| inverse(resistance)[1].unwrap_or(f64::NAN);
+    let contact = nominal(&case.results.contact.resistance);
+    let whole = nominal(&case.results.source_to_sink.resistance);
+    let count = case.bolts.len().max(1) as f64;
+    let mut text = format!(
+        "per footprint of {} cm²: contact only {} W/(m²·K), source to sink {} W/(m²·K)\n",
+        four(case.footprint * 1e4),
+        four(contact / case.footprint),
+        four(whole / case.footprint),
+    );
+    let _ = write!(
+        text,
+        "per bolt: contact only {} W/K, source to sink {} W/K",
+        four(contact / count),
+        four(whole / count),
+    );
+    text.push_str(if case.bolts.len() > 1 {
+        " (spreading: do not multiply)\n"
+    } else {
+        "\n"
+    });
+    text
+}
+
+fn bounds(case: &CaseResult) -> String {
+    match (case.resistance_lower, case.resistance_upper) {
+        (None, None) => String::new(),
+        (Some(lower), None) => format!(
+            "bounds of source to sink for this field: at least {} K/W; no upper bound is proved\n",
+            four(lower)
+        ),
+        (lower, Some(upper)) => format!(
+            "bounds of source to sink for this field: {} to {} K/W\n",
+            optional(lower),
+            four(upper)
+        ),
+    }
+}
+
+/// Temperature rise and how the requirement stands.
+pub fn verdict(estimate: &Estimate, case: &CaseResult) -> String {
+    let mut text = String::new();
+    if let Some(rise) = case.rise {
+        let _ = write!(
+            text,
+            "rise above the sink surface at {} W: {} K; hottest point {} K; across the faces {} K",
+            optional(estimate.heat),
+            spread(&rise.source, 1.0).replace("  ", " "),
+            four(rise.hottest),
+            four(rise.interface_drop),
+        );
+        if let Some(drop) = rise.coolant_drop {
+            let _ = write!(text, "; sink surface to coolant {} K", four(drop));
+        }
+        text = wrapped(&text, WIDTH, 2);
+        text.push('\n');
+    }
+    if let Some(requirement) = &case.requirement {
+        text.push_str(&wrapped(&required(requirement, estimate.draws), WIDTH, 2));
+        text.push('\n');
+    }
+    text
+}
+
+fn required(requirement: &RequirementResult, draws: u32) -> String {
+    let (quantity, unit) = match requirement.kind {
+        RequirementKind::Rise => ("rise".to_owned(), "K"),
+        RequirementKind::HottestRise => ("rise of the hottest point".to_owned(), "K"),
+        RequirementKind::InterfaceDrop => ("drop across the faces".to_owned(), "K"),
+        RequirementKind::Resistance(plane) => (format!("resistance {}", plane_name(plane)), "K/W"),
+        RequirementKind::Conductance(plane) => {
+            (format!("conductance {}", plane_name(plane)), "W/K")
+        }
+    };
+    let bound = match requirement.bound {
+        Limit::Most => "at most",
+        Limit::Least => "at least",
+    };
+    let value = four(requirement.value);
+    let verdict = match requirement.met {
+        Met::Yes => format!("MET, {value} {unit} at the unfavourable end"),
+        Met::No => format!("NOT MET, {value} {unit}"),
+        Met::Uncertain if draws == 0 => {
+            format!("UNCERTAIN: met at nominal, {value} {unit}; no low and high were drawn")
+        }
+        Met::Uncertain => {
+            format!("UNCERTAIN: met at nominal, {value} {unit} at the unfavourable end")
+        }
+    };
+    format!(
+        "requirement: {quantity} {bound} {} {unit}: {verdict}",
+        four(requirement.limit)
+    )
+}
+
+fn plane_name(plane: Plane) -> &'static str {
+    match plane {
+        Plane::Contact => "of the contact only",
+        Plane::NodeToNode => "node to node",
+        Plane::AddedByJoint => "added by the joint",
+        Plane::SourceToSink => "source to sink",
+    }
+}
+
+/// Hot and cold side by side.
+pub fn cases(estimate: &Estimate) -> String {
+    let columns = &estimate.cases;
+    let row = |name: &str, cell: &dyn Fn(&CaseResult) -> String| {
+        let mut row = vec![name.to_owned()];
+        row.extend(columns.iter().map(cell));
+        row
+    };
+    let mut rows = vec![
+        row("sink surface, °C", &|case| {
+            format!("{:.1}", case.sink_temperature - ICE_POINT)
+        }),
+        row("clamp force in service, kN", &|case| {
+            case.bolts
+                .first()
+                .map_or_else(String::new, |bolt| spread(&bolt.force_in_service, 1e3))
+        }),
+        row("contact only, K/W", &|case| {
+            spread(&case.results.contact.resistance, 1.0)
+        }),
+        row("added by joint, K/W", &|case| {
+            spread(&case.results.added_by_joint.resistance, 1.0)
+        }),
+        row("source to sink, K/W", &|case| {
+            spread(&case.results.source_to_sink.resistance, 1.0)
+        }),
+    ];
+    if columns.iter().any(|case| case.rise.is_some()) {
+        rows.push(row("rise, K", &|case| {
+            case.rise
+                .map_or_else(String::new, |rise| spread(&rise.source, 1.0))
+        }));
+    }
+    if columns.iter().any(|case| case.requirement.is_some()) {
+        rows.push(row("requirement", &|case| {
+            case.requirement.map_or_else(String::new, |each| {
+                match each.met {
+                    Met::Yes => "met",
+                    Met::No => "NOT MET",
+                    Met::Uncertain => "uncertain",
+                }
+                .to_owned()
+            })
+        }));
+    }
+    let mut headings = vec![("case", Side::Left)];
+    headings.extend(columns.iter().map(|case| (case.name, Side::Left)));
+    aligned(&headings, &rows)
+}
+/// What the spread comes from and what to do about it.
+pub fn drivers(drivers: &[Driver]) -> String {
+    if drivers.is_empty() {
+        return String::new();
+    }
+    let mut text = "what drives the spread of source to sink\n".to_owned();
+    // Below one part in a hundred nothing is worth a line.
+    for driver in drivers.iter().filter(|driver| driver.share >= 0.01).take(5) {
+        let line = format!(
+            "{:>4.0} %  {:<22}{}",
+            driver.share * 100.0,
+            driver.input,
+            driver.remedy
+        );
+        let _ = writeln!(text, "{}", wrapped_after(&line, 30));
+    }
+    text
+}

@@ -1,0 +1,478 @@
+//! The command line: what it prints where, how it ends, what it leaves on disk.
+
+use snapbox::{
+    cmd::{Command, OutputAssert, cargo_bin},
+    str,
+};
+use std::{fs, path::Path};
+use tempfile::{TempDir, tempdir};
+
+fn ringsum() -> Command {
+    Command::new(cargo_bin!("ringsum"))
+        .env_remove("CLICOLOR_FORCE")
+        .env("NO_COLOR", "1")
+        .env("COLUMNS", "100")
+}
+
+fn within(folder: &TempDir) -> Command {
+    ringsum().current_dir(folder.path())
+}
+
+fn names(folder: &Path) -> Vec<String> {
+    let mut names: Vec<String> = fs::read_dir(folder)
+        .unwrap()
+        .map(|entry| entry.unwrap().file_name().into_string().unwrap())
+        .collect();
+    names.sort();
+    names
+}
+
+fn stdout(assert: &OutputAssert) -> String {
+    String::from_utf8(assert.get_output().stdout.clone()).unwrap()
+}
+
+fn stderr(assert: &OutputAssert) -> String {
+    String::from_utf8(assert.get_output().stderr.clone()).unwrap()
+}
+
+#[test]
+fn without_arguments_three_lines_lead_to_a_result() {
+    ringsum()
+        .assert()
+        .code(0)
+        .stdout_eq(str![[r#"
+ringsum new joint.toml         writes a starter joint to edit
+ringsum estimate joint.toml    tells its thermal resistance: low, nominal, high
+ringsum --help                 lists every command
+
+"#]])
+        .stderr_eq("");
+}
+
+#[test]
+fn help_lists_the_commands_and_hides_those_for_packagers() {
+    let help = stdout(&ringsum().arg("--help").assert().code(0).stderr_eq(""));
+    for command in [
+        "new", "check", "estimate", "torque", "draw", "list", "explain",
+    ] {
+        assert!(
+            help.contains(&format!("\n  {command}")),
+            "{command}:\n{help}"
+        );
+    }
+    for hidden in ["completions", "man", "schema"] {
+        assert!(
+            !help.contains(&format!("\n  {hidden}")),
+            "{hidden}:\n{help}"
+        );
+    }
+    assert!(help.contains("Exit codes"), "{help}");
+}
+
+#[test]
+fn every_command_has_help_and_usage_errors_go_to_standard_error() {
+    for command in [
+        "new",
+        "check",
+        "estimate",
+        "torque",
+        "draw",
+        "list",
+        "explain",
+        "completions",
+        "man",
+        "schema",
+    ] {
+        ringsum()
+            .args([command, "--help"])
+            .assert()
+            .code(0)
+            .stderr_eq("");
+        let wrong = ringsum()
+            .args([command, "--nonsense"])
+            .assert()
+            .code(2)
+            .stdout_eq("");
+        assert!(stderr(&wrong).contains("--nonsense"));
+    }
+    for command in ["check", "estimate", "torque", "draw"] {
+        ringsum().arg(command).assert().code(2).stdout_eq("");
+    }
+}
+
+#[test]
+fn an_unknown_command_is_a_usage_error_with_the_nearest_one() {
+    let wrong = ringsum().arg("estimat").assert().code(2).stdout_eq("");
+    assert!(stderr(&wrong).contains("estimate"));
+}
+
+#[test]
+fn the_version_is_that_of_the_package() {
+    ringsum()
+        .arg("--version")
+        .assert()
+        .code(0)
+        .stdout_eq(format!("ringsum {}\n", env!("CARGO_PKG_VERSION")));
+}
+
+#[test]
+fn a_missing_file_is_named_with_the_way_on() {
+    let folder = tempdir().unwrap();
+    for command in ["check", "estimate", "torque"] {
+        let missing = within(&folder)
+            .args([command, "nowhere.toml"])
+            .assert()
+            .code(2)
+            .stdout_eq("");
+        let told = stderr(&missing);
+        assert!(told.contains("file/not-found"), "{told}");
+        assert!(told.contains("nowhere.toml"), "{told}");
+        assert!(told.contains("ringsum new nowhere.toml"), "{told}");
+    }
+}
+
+#[test]
+fn a_mistyped_file_name_meets_its_neighbour() {
+    let folder = tempdir().unwrap();
+    fs::write(folder.path().join("converter.toml"), "x = 1").unwrap();
+    for typed in ["convertor.toml", "converter"] {
+        let missing = within(&folder).args(["check", typed]).assert().code(2);
+        let told = stderr(&missing);
+        assert!(told.contains("did you mean `converter.toml`?"), "{told}");
+    }
+}
+
+#[test]
+fn a_folder_an_empty_file_and_foreign_bytes_are_faults_of_the_file() {
+    let folder = tempdir().unwrap();
+    let write = |name: &str, bytes: &[u8]| fs::write(folder.path().join(name), bytes).unwrap();
+    fs::create_dir(folder.path().join("folder")).unwrap();
+    write("empty.toml", b"");
+    write("blank.toml", b"\xEF\xBB\xBF \n\t\n");
+    write("latin.toml", b"title = \"x\"\nthickness = \"5 \xB5m\"\n");
+    write("wide.toml", b"\xFF\xFEt\0i\0");
+    for (name, code, word) in [
+        ("folder", "file/unreadable", "folder"),
+        ("empty.toml", "file/empty", "empty"),
+        ("blank.toml", "file/empty", "empty"),
+        ("latin.toml", "file/not-utf8", "0xB5 on line 2"),
+        ("wide.toml", "file/not-utf8", "UTF-16"),
+    ] {
+        for command in ["check", "estimate"] {
+            let told = stderr(
+                &within(&folder)
+                    .args([command, name])
+                    .assert()
+                    .code(2)
+                    .stdout_eq(""),
+            );
+            assert!(told.contains(code) && told.contains(word), "{name}: {told}");
+        }
+    }
+}
+
+#[test]
+fn a_file_beyond_ten_megabytes_is_not_read() {
+    let folder = tempdir().unwrap();
+    fs::write(folder.path().join("huge.toml"), vec![b'#'; 10_000_001]).unwrap();
+    let told = stderr(
+        &within(&folder)
+            .args(["check", "huge.toml"])
+            .assert()
+            .code(2),
+    );
+    assert!(told.contains("file/too-large"), "{told}");
+}
+
+#[test]
+fn faults_in_json_stand_on_standard_output() {
+    let folder = tempdir().unwrap();
+    let assert = within(&folder)
+        .args(["check", "--json", "nowhere.toml"])
+        .assert()
+        .code(2);
+    let object: serde_json::Value = serde_json::from_str(&stdout(&assert)).unwrap();
+    assert_eq!(object["ok"], false);
+    assert_eq!(object["file"], "nowhere.toml");
+    assert_eq!(object["faults"][0]["code"], "file/not-found");
+    assert_eq!(object["faults"][0]["line"], 1);
+}
+
+#[test]
+fn of_several_files_every_one_is_told_and_any_fault_is_a_failure() {
+    let folder = tempdir().unwrap();
+    let both = within(&folder)
+        .args(["check", "one.toml", "two.toml"])
+        .assert()
+        .code(1);
+    let told = stderr(&both);
+    assert!(
+        told.contains("one.toml") && told.contains("two.toml"),
+        "{told}"
+    );
+
+    let lines = within(&folder)
+        .args(["check", "--json", "one.toml", "two.toml"])
+        .assert()
+        .code(1);
+    assert_eq!(stdout(&lines).lines().count(), 2, "one object per line");
+}
+
+#[test]
+fn standard_input_has_a_name_and_is_read_once() {
+    let empty = ringsum()
+        .args(["estimate", "-"])
+        .stdin("")
+        .assert()
+        .code(2)
+        .stdout_eq("");
+    assert!(stderr(&empty).contains("<stdin>"));
+    let wrong = ringsum()
+        .args(["check", "-"])
+        .stdin("title = \n")
+        .assert()
+        .code(2);
+    assert!(stderr(&wrong).contains("<stdin>"));
+    ringsum()
+        .args(["check", "-", "-"])
+        .stdin("x = 1")
+        .assert()
+        .code(2)
+        .stdout_eq("");
+}
+
+#[test]
+fn a_field_of_another_build_is_refused_with_those_of_this_one() {
+    let told = stderr(
+        &ringsum()
+            .args(["estimate", "x.toml", "--field", "elastic"])
+            .assert()
+            .code(2),
+    );
+    assert!(
+        told.contains("no elastic field") && told.contains("`cone`"),
+        "{told}"
+    );
+    let told = stderr(
+        &ringsum()
+            .args(["estimate", "x.toml", "--field", "magic"])
+            .assert()
+            .code(2),
+    );
+    assert!(told.contains("`cone`"), "{told}");
+}
+
+#[test]
+fn numbers_beyond_their_range_are_usage_errors() {
+    for arguments in [
+        ["estimate", "x.toml", "--draws", "-1"],
+        ["estimate", "x.toml", "--draws", "99999999"],
+        ["estimate", "x.toml", "--seed", "one"],
+        ["torque", "x.toml", "--steps", "1"],
+        ["torque", "x.toml", "--group", "0"],
+        ["torque", "x.toml", "--from", "1.7"],
+        ["torque", "x.toml", "--to", "3 mm"],
+    ] {
+        ringsum().args(arguments).assert().code(2).stdout_eq("");
+    }
+    let told = stderr(
+        &ringsum()
+            .args(["torque", "x.toml", "--from", "2 N·m", "--to", "1 N·m"])
+            .assert()
+            .code(2),
+    );
+    assert!(told.contains("--from must be less than --to"), "{told}");
+}
+
+#[test]
+fn a_starter_joint_is_written_once_and_replaced_on_request() {
+    let folder = tempdir().unwrap();
+    let printed = stdout(&ringsum().arg("new").assert().code(0).stderr_eq(""));
+    let first = within(&folder)
+        .args(["new", "joint.toml"])
+        .assert()
+        .code(0)
+        .stdout_eq("");
+    assert!(stderr(&first).contains("ringsum estimate joint.toml"));
+    let path = folder.path().join("joint.toml");
+    assert_eq!(fs::read_to_string(&path).unwrap(), printed);
+
+    fs::write(&path, "mine").unwrap();
+    let refused = within(&folder)
+        .args(["new", "joint.toml"])
+        .assert()
+        .code(2)
+        .stdout_eq("");
+    assert!(stderr(&refused).contains("--force"));
+    assert_eq!(fs::read_to_string(&path).unwrap(), "mine");
+
+    within(&folder)
+        .args(["new", "joint.toml", "--force"])
+        .assert()
+        .code(0);
+    assert_eq!(fs::read_to_string(&path).unwrap(), printed);
+    assert_eq!(
+        names(folder.path()),
+        ["joint.toml"],
+        "no temporary file is left"
+    );
+}
+
+#[test]
+fn a_target_that_cannot_be_written_is_refused_before_anything_is_computed() {
+    let folder = tempdir().unwrap();
+    fs::create_dir(folder.path().join("folder")).unwrap();
+    fs::write(folder.path().join("there.svg"), "kept").unwrap();
+    for out in ["folder", "absent/joint.toml"] {
+        within(&folder)
+            .args(["new", out])
+            .assert()
+            .code(2)
+            .stdout_eq("");
+    }
+    // The joint does not exist: were it read first, the message would name it.
+    for (out, word) in [
+        ("there.svg", "exists already"),
+        ("curve.pdf", "neither .svg nor .png"),
+        ("curve", "neither .svg nor .png"),
+        ("absent/curve.svg", "no folder"),
+    ] {
+        let refused = within(&folder)
+            .args(["torque", "x.toml", "--out", out])
+            .assert()
+            .code(2);
+        assert!(
+            stderr(&refused).contains(word),
+            "{out}: {}",
+            stderr(&refused)
+        );
+    }
+    let refused = within(&folder)
+        .args(["draw", "x.toml", "--out", "there.svg"])
+        .assert()
+        .code(2);
+    assert!(
+        stderr(&refused).contains("is a file"),
+        "{}",
+        stderr(&refused)
+    );
+    fs::write(folder.path().join("folder/pressure.svg"), "kept").unwrap();
+    let refused = within(&folder)
+        .args(["draw", "x.toml", "--out", "folder"])
+        .assert()
+        .code(2);
+    assert!(
+        stderr(&refused).contains("exists already"),
+        "{}",
+        stderr(&refused)
+    );
+    assert_eq!(names(folder.path()), ["folder", "there.svg"]);
+}
+
+#[test]
+fn colour_is_plain_when_piped_and_forced_on_request() {
+    let told = |choice: &[&str]| {
+        let assert = ringsum()
+            .args(["check", "nowhere.toml"])
+            .args(choice)
+            .assert()
+            .code(2);
+        stderr(&assert)
+    };
+    assert!(!told(&[]).contains('\u{1b}'));
+    assert!(!told(&["--color", "never"]).contains('\u{1b}'));
+    assert!(
+        told(&["--color", "always"]).contains('\u{1b}'),
+        "a request beats NO_COLOR"
+    );
+    let usage = ringsum()
+        .args(["--color=always", "nonsense"])
+        .assert()
+        .code(2);
+    assert!(stderr(&usage).contains('\u{1b}'), "usage errors too");
+}
+
+#[test]
+fn codes_are_listed_and_explained_and_a_slip_is_mended() {
+    let list = stdout(&ringsum().arg("explain").assert().code(0).stderr_eq(""));
+    assert!(list.contains("code"), "{list}");
+    ringsum()
+        .args(["explain", "no/such-code-at-all"])
+        .assert()
+        .code(2)
+        .stdout_eq("");
+    let object = stdout(&ringsum().args(["explain", "--json"]).assert().code(0));
+    serde_json::from_str::<serde_json::Value>(&object).unwrap();
+}
+
+#[test]
+fn completions_and_manual_pages_come_from_the_same_description() {
+    for shell in ["bash", "zsh", "fish"] {
+        let script = stdout(&ringsum().args(["completions", shell]).assert().code(0));
+        assert!(script.contains("estimate"), "{shell}");
+    }
+    let page = stdout(&ringsum().arg("man").assert().code(0));
+    assert!(page.starts_with(".ie") || page.contains(".TH"), "{page}");
+    let page = stdout(&ringsum().args(["man", "estimate"]).assert().code(0));
+    assert!(page.contains("strict"), "{page}");
+    ringsum()
+        .args(["man", "nonsense"])
+        .assert()
+        .code(2)
+        .stdout_eq("");
+}
+
+#[cfg(unix)]
+#[test]
+fn a_reader_that_leaves_early_is_no_failure_and_a_full_disk_is_one() {
+    use std::process::{Command, Stdio};
+    let mut child = Command::new(cargo_bin!("ringsum"))
+        .arg("new")
+        .stdout(Stdio::piped())
+        .stderr(Stdio::piped())
+        .spawn()
+        .unwrap();
+    drop(child.stdout.take());
+    let ended = child.wait_with_output().unwrap();
+    assert!(ended.status.success(), "{ended:?}");
+    assert!(ended.stderr.is_empty(), "{ended:?}");
+
+    if let Ok(full) = fs::OpenOptions::new().write(true).open("/dev/full") {
+        let ended = Command::new(cargo_bin!("ringsum"))
+            .arg("new")
+            .stdout(full)
+            .output()
+            .unwrap();
+        assert_eq!(ended.status.code(), Some(1), "{ended:?}");
+    }
+}
+
+#[cfg(unix)]
+#[test]
+fn arguments_that_are_no_text_do_not_bring_it_down() {
+    use std::{ffi::OsStr, os::unix::ffi::OsStrExt};
+    let odd = OsStr::from_bytes(b"\xFF\xFE.toml");
+    for command in ["check", "estimate", "torque"] {
+        ringsum()
+            .arg(command)
+            .arg(odd)
+            .assert()
+            .code(2)
+            .stdout_eq("");
+    }
+    for arguments in [["explain"], ["list"], ["completions"], ["man"]] {
+        ringsum()
+            .args(arguments)
+            .arg(odd)
+            .assert()
+            .code(2)
+            .stdout_eq("");
+    }
+    ringsum()
+        .args(["estimate", "x.toml", "--set"])
+        .arg(odd)
+        .assert()
+        .code(2)
+        .stdout_eq("");
+    ringsum().arg(odd).assert().code(2).stdout_eq("");
+}

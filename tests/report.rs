@@ -1,0 +1,511 @@
+//! The report of `estimate`, as text and as JSON, from a result built by hand.
+
+use ringsum::{
+    diagnostic::{Assumption, Caution},
+    estimate::{
+        Band, BoltResult, CaseResult, Driver, Estimate, Met, PlaneResult, PressureResult,
+        RequirementResult, Results, RingRow, Rise, TorquePoint, TorqueSweep,
+    },
+    joint::{Limit, Plane, RequirementKind},
+    report::{
+        json, sweep,
+        text::{self, Detail, WIDTH},
+    },
+};
+use serde_json::{Value, json};
+
+fn band(low: f64, nominal: f64, high: f64) -> Band {
+    Band {
+        low: Some(low),
+        nominal,
+        high: Some(high),
+    }
+}
+
+fn plane(low: f64, nominal: f64, high: f64) -> PlaneResult {
+    PlaneResult {
+        resistance: band(low, nominal, high),
+    }
+}
+
+/// One case of a joint of six bolts, all numbers made up but of a real size.
+fn case(name: &'static str, sink_temperature: f64) -> CaseResult {
+    let bolt = BoltResult {
+        at: [0.007, 0.007],
+        force: band(2100.0, 2510.4, 3020.0),
+        force_in_service: band(1800.0, 2400.0, 2950.0),
+        strength_use: Some([0.612, 0.755]),
+        largest_torque: Some(2.04),
+        contact_radius: 0.0071,
+        contact_conductance: 31.25,
+    };
+    CaseResult {
+        name,
+        sink_temperature,
+        bolts: vec![bolt; 6],
+        pressure: PressureResult {
+            peak: 61.2e6,
+            contact_area: 9.5e-4,
+            radius_95: 6.2e-3,
+            force: 14400.0,
+            gap_max: None,
+            gap_mean: None,
+        },
+        results: Results {
+            contact: plane(0.004, 0.005, 0.0075),
+            node_to_node: plane(0.15, 0.16, 0.18),
+            added_by_joint: plane(0.12, 0.125, 0.15),
+            source_to_sink: plane(0.2, 0.25, 0.4),
+            perfect_contact: plane(0.1, 0.125, 0.15),
+        },
+        resistance_lower: Some(0.11),
+        resistance_upper: None,
+        numerical_error: 0.0042,
+        footprint: 0.0192,
+        rise: Some(Rise {
+            source: band(4.4, 5.5, 8.8),
+            hottest: 6.1,
+            interface_drop: 2.9,
+            coolant_drop: Some(0.75),
+        }),
+        requirement: Some(RequirementResult {
+            kind: RequirementKind::Rise,
+            limit: 5.0,
+            bound: Limit::Most,
+            value: 8.8,
+            met: Met::No,
+        }),
+        drivers: vec![
+            Driver {
+                input: "friction",
+                share: 0.41,
+                remedy: "lubricate, or measure torque against tension on your own parts",
+            },
+            Driver {
+                input: "roughness",
+                share: 0.003,
+                remedy: "measure it",
+            },
+        ],
+    }
+}
+
+fn estimate() -> Estimate {
+    Estimate {
+        title: "Converter box on shear panel".to_owned(),
+        seed: 7,
+        draws: 1024,
+        field: "cone",
+        resolution: "normal",
+        source_plane: "mean of the heated zone on base".to_owned(),
+        sink_plane: "mean of the back of panel".to_owned(),
+        heat: Some(22.0),
+        cases: vec![case("service", 293.15)],
+        cautions: vec![Caution {
+            code: "preload/over-yield",
+            text: "a caution with many words ".repeat(9),
+        }],
+        assumptions: vec![Assumption {
+            field: "plate.panel.flatness".to_owned(),
+            value: "flat".to_owned(),
+            why: "no flatness is stated".to_owned(),
+        }],
+    }
+}
+
+fn keys(value: &Value) -> Vec<&str> {
+    value
+        .as_object()
+        .expect("an object")
+        .keys()
+        .map(String::as_str)
+        .collect()
+}
+
+/// The keys of the contract; each must be there, others may stand beside them.
+fn has(value: &Value, contract: &[&str]) {
+    for key in contract {
+        assert!(keys(value).contains(key), "{key} is missing in {value}");
+    }
+}
+
+#[test]
+fn json_carries_every_key_of_the_contract() {
+    let object = json::estimate(&estimate());
+    has(
+        &object,
+        &[
+            "ringsum",
+            "format",
+            "title",
+            "seed",
+            "field",
+            "resolution",
+            "planes",
+            "bolts",
+            "pressure",
+            "results",
+            "bounds",
+            "numerical_error",
+            "rise",
+            "requirement",
+            "cases",
+            "drivers",
+            "cautions",
+            "assumptions",
+        ],
+    );
+    has(&object["planes"], &["source", "sink"]);
+    has(
+        &object["bolts"][0],
+        &[
+            "at",
+            "force",
+            "force_in_service",
+            "strength_use",
+            "largest_torque",
+        ],
+    );
+    has(&object["bolts"][0]["force"], &["low", "nominal", "high"]);
+    has(&object["bolts"][0]["strength_use"], &["nominal", "high"]);
+    has(
+        &object["pressure"],
+        &[
+            "peak",
+            "contact_area",
+            "radius_95",
+            "force",
+            "gap_max",
+            "gap_mean",
+        ],
+    );
+    has(
+        &object["results"],
+        &[
+            "contact",
+            "node_to_node",
+            "added_by_joint",
+            "source_to_sink",
+            "perfect_contact",
+        ],
+    );
+    for result in [
+        "contact",
+        "node_to_node",
+        "added_by_joint",
+        "source_to_sink",
+    ] {
+        for side in ["resistance", "conductance"] {
+            has(
+                &object["results"][result][side],
+                &["low", "nominal", "high"],
+            );
+        }
+    }
+    has(&object["bounds"], &["resistance_lower", "resistance_upper"]);
+    has(&object["rise"], &["low", "nominal", "high", "hottest"]);
+    has(&object["requirement"], &["kind", "limit", "met"]);
+    has(&object["drivers"][0], &["input", "share"]);
+    has(&object["cautions"][0], &["code", "text"]);
+    has(&object["assumptions"][0], &["field", "value", "why"]);
+}
+
+#[test]
+fn json_numbers_are_si_and_unrounded() {
+    let object = json::estimate(&estimate());
+    assert_eq!(object["bolts"][0]["force"]["nominal"], json!(2510.4));
+    assert_eq!(object["pressure"]["peak"], json!(61.2e6));
+    assert_eq!(object["pressure"]["gap_max"], Value::Null);
+    assert_eq!(object["bounds"]["resistance_upper"], Value::Null);
+    assert_eq!(object["requirement"]["met"], json!(false));
+    assert_eq!(object["cases"], json!([]));
+}
+
+#[test]
+fn the_smaller_conductance_belongs_to_the_larger_resistance() {
+    let object = json::estimate(&estimate());
+    let result = &object["results"]["source_to_sink"];
+    assert_eq!(
+        result["resistance"],
+        json!({ "low": 0.2, "nominal": 0.25, "high": 0.4 })
+    );
+    assert_eq!(
+        result["conductance"],
+        json!({ "low": 2.5, "nominal": 4.0, "high": 5.0 })
+    );
+}
+
+#[test]
+fn what_does_not_apply_is_null() {
+    let mut bare = estimate();
+    bare.draws = 0;
+    let case = &mut bare.cases[0];
+    case.rise = None;
+    case.requirement = None;
+    case.resistance_lower = None;
+    case.bolts[0].strength_use = None;
+    case.bolts[0].largest_torque = None;
+    case.results.added_by_joint.resistance = Band {
+        low: None,
+        nominal: 0.0,
+        high: None,
+    };
+    case.pressure.peak = f64::NAN;
+    let object = json::estimate(&bare);
+    assert_eq!(object["rise"], Value::Null);
+    assert_eq!(object["requirement"], Value::Null);
+    assert_eq!(object["bolts"][0]["strength_use"], Value::Null);
+    assert_eq!(object["pressure"]["peak"], Value::Null);
+    let added = &object["results"]["added_by_joint"];
+    assert_eq!(added["resistance"]["low"], Value::Null);
+    assert_eq!(
+        added["conductance"]["nominal"],
+        Value::Null,
+        "no joint, no finite conductance"
+    );
+}
+
+#[test]
+fn hot_and_cold_repeat_the_block_and_the_first_is_the_headline() {
+    let mut both = estimate();
+    both.cases = vec![case("hot", 323.15), case("cold", 253.15)];
+    let object = json::estimate(&both);
+    let block = &object["cases"];
+    assert_eq!(block.as_array().expect("a list").len(), 2);
+    assert_eq!(block[0]["case"], json!("hot"));
+    assert_eq!(block[1]["case"], json!("cold"));
+    for key in [
+        "bolts",
+        "pressure",
+        "results",
+        "bounds",
+        "numerical_error",
+        "rise",
+        "requirement",
+    ] {
+        assert_eq!(block[0][key], object[key], "{key}");
+    }
+    let report = text::estimate(&both);
+    assert!(report.contains("sink surface, °C"), "{report}");
+    assert!(
+        report.contains("50.0") && report.contains("-20.0"),
+        "{report}"
+    );
+}
+
+#[test]
+fn text_fits_a_screen_and_names_its_planes() {
+    let report = text::estimate(&estimate());
+    assert!(report.lines().count() <= 45, "{report}");
+    for line in report.lines() {
+        assert!(line.chars().count() <= WIDTH, "{line}");
+        assert_eq!(line, line.trim_end(), "no trailing space");
+    }
+    for word in [
+        "mean of the heated zone on base",
+        "mean of the back of panel",
+        "contact only",
+        "added by joint",
+        "source to sink",
+        "field cone",
+        "preload/over-yield",
+        "plate.panel.flatness",
+    ] {
+        assert!(report.contains(word), "{word} is missing:\n{report}");
+    }
+}
+
+#[test]
+fn text_shows_resistance_beside_its_inverse() {
+    let report = text::estimate(&estimate());
+    let row = |name: &str| {
+        report
+            .lines()
+            .find(|line| line.starts_with(name))
+            .map(|line| {
+                line.split_whitespace()
+                    .map(str::to_owned)
+                    .collect::<Vec<_>>()
+            })
+            .expect("a row of that name")
+    };
+    assert_eq!(
+        row("source to sink  ")[3..9],
+        ["0.2000", "0.2500", "0.4000", "2.500", "4.000", "5.000"]
+    );
+    assert_eq!(
+        row("contact only  ")[2..8],
+        [
+            "0.004000", "0.005000", "0.007500", "133.3", "200.0", "250.0"
+        ]
+    );
+}
+
+#[test]
+fn a_verdict_says_what_is_met_and_what_is_not_known() {
+    let mut changed = estimate();
+    assert!(text::estimate(&changed).contains("NOT MET, 8.800 K"));
+    let mut stand = |met, draws| {
+        changed.draws = draws;
+        changed.cases[0].requirement = Some(RequirementResult {
+            kind: RequirementKind::Conductance(Plane::SourceToSink),
+            limit: 3.0,
+            bound: Limit::Least,
+            value: 3.25,
+            met,
+        });
+        let report = text::estimate(&changed);
+        report.split_whitespace().collect::<Vec<_>>().join(" ")
+    };
+    let met = stand(Met::Yes, 1024);
+    assert!(
+        met.contains("conductance source to sink at least 3.000 W/K: MET, 3.250 W/K"),
+        "{met}"
+    );
+    assert!(stand(Met::Uncertain, 0).contains("no low and high were drawn"));
+    assert!(stand(Met::Uncertain, 64).contains("UNCERTAIN: met at nominal"));
+}
+
+#[test]
+fn bolts_that_differ_have_rows_of_their_own() {
+    let mut mixed = estimate();
+    mixed.cases[0].bolts[5].force.nominal = 2000.0;
+    let report = text::estimate(&mixed);
+    assert!(report.contains("bolts 1 to 5"), "{report}");
+    assert!(report.contains("bolt 6"), "{report}");
+}
+
+#[test]
+fn brief_counts_the_assumptions_and_nominal_alone_shows_dashes() {
+    let brief = text::estimate_at(&estimate(), Detail::Brief);
+    assert!(brief.contains("assumptions: 1"), "{brief}");
+    assert!(!brief.contains("plate.panel.flatness"), "{brief}");
+
+    let mut nominal = estimate();
+    nominal.draws = 0;
+    nominal.cases[0].results.contact.resistance.low = None;
+    nominal.cases[0].results.contact.resistance.high = None;
+    assert!(text::estimate(&nominal).contains("nominal only"));
+}
+
+#[test]
+fn text_carries_no_control_characters_of_the_file() {
+    let mut hostile = estimate();
+    hostile.title = "box\u{1b}]0;taken over\u{7}".to_owned();
+    assert!(!text::estimate(&hostile).contains('\u{1b}'));
+}
+
+#[test]
+fn colour_changes_no_word() {
+    let report = text::estimate(&estimate());
+    let painted = text::painted(&report);
+    assert_ne!(painted, report);
+    assert_eq!(anstream::adapter::strip_str(&painted).to_string(), report);
+}
+
+#[test]
+fn nothing_at_all_is_still_a_report() {
+    let mut empty = estimate();
+    empty.cases.clear();
+    empty.cautions.clear();
+    empty.assumptions.clear();
+    assert!(text::estimate(&empty).starts_with("Converter box"));
+    assert_eq!(json::estimate(&empty)["cautions"], json!([]));
+}
+
+fn torque_sweep() -> TorqueSweep {
+    let point = |torque: f64, source_to_sink: f64| TorquePoint {
+        torque,
+        force: band(
+            1500.0 * torque - 100.0,
+            1500.0 * torque,
+            1500.0 * torque + 200.0,
+        ),
+        source_to_sink: band(source_to_sink - 0.01, source_to_sink, source_to_sink + 0.02),
+        contact: band(0.004, 0.005, 0.006),
+        added_by_joint: band(0.05, 0.06, 0.07),
+        strength_use: Some([0.3 * torque, 0.4 * torque]),
+        passes: torque < 2.1,
+    };
+    TorqueSweep {
+        title: "Converter box".to_owned(),
+        group: "M4 socket, 6 places".to_owned(),
+        stated: 1.7,
+        largest: Some((2.04, "yield of the bolt")),
+        best: 1.0,
+        points: vec![point(1.0, 0.1), point(1.6, 0.11), point(2.2, 0.12)],
+        required: Some((0.115, Limit::Most)),
+        cautions: Vec::new(),
+    }
+}
+
+#[test]
+fn a_torque_sweep_marks_the_stated_the_best_and_what_strength_forbids() {
+    let report = sweep::torque(&torque_sweep());
+    let line = |start: &str| {
+        report
+            .lines()
+            .find(|line| line.trim_start().starts_with(start))
+            .expect("a row of that torque")
+            .to_owned()
+    };
+    assert!(line("1.000").ends_with("best"), "{report}");
+    assert!(line("1.600").ends_with("stated"), "{report}");
+    assert!(line("2.200").ends_with("over"), "{report}");
+    assert!(
+        report.contains("beyond 2.040 N·m, where yield of the bolt ends the window"),
+        "{report}"
+    );
+    assert!(
+        report.lines().all(|line| line.chars().count() <= WIDTH),
+        "{report}"
+    );
+}
+
+#[test]
+fn a_torque_sweep_in_json_keeps_its_keys() {
+    let object = json::torque(&torque_sweep());
+    has(
+        &object,
+        &[
+            "title", "group", "stated", "largest", "best", "required", "points", "cautions",
+        ],
+    );
+    assert_eq!(
+        object["largest"],
+        json!({ "torque": 2.04, "limit": "yield of the bolt" })
+    );
+    assert_eq!(
+        object["required"],
+        json!({ "resistance": 0.115, "bound": "most" })
+    );
+    has(
+        &object["points"][0],
+        &[
+            "torque",
+            "force",
+            "source_to_sink",
+            "contact",
+            "added_by_joint",
+            "strength_use",
+            "passes",
+        ],
+    );
+}
+
+#[test]
+fn rings_are_shown_in_millimetres_and_kept_in_metres() {
+    let ring = RingRow {
+        radius: [0.00225, 0.0025],
+        area: 3.7e-6,
+        pressure: 61e6,
+        conductance: 2.4e5,
+        share: 0.9,
+        cumulative: 0.9,
+    };
+    assert!(text::rings(&[vec![ring]]).contains("2.250"));
+    assert_eq!(
+        json::rings(&[vec![ring]])[0][0]["inner_radius"],
+        json!(0.00225)
+    );
+}
