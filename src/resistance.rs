@@ -3,6 +3,7 @@
 //! `cells` cuts the plates into one cell per bolt and its rings, once per geometry; `path` solves
 //! the heat through them for one set of forces and conductances; `field` reads the pressure field.
 
+pub mod annulus;
 pub mod cells;
 pub mod field;
 pub mod network;

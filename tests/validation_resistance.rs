@@ -5,7 +5,7 @@ use std::{collections::BTreeMap, f64::consts::PI};
 use ringsum::{
     joint::{ConeRule, ConeShape},
     pressure::{Cone, Pair, cone},
-    resistance::network::{Annulus, Ends, edges},
+    resistance::{annulus::{Annulus, Ends}, network::edges},
 };
 use serde::Deserialize;
 

@@ -4,8 +4,6 @@
 //! flux linear through each plate. By the complementary energy principle the resistance of a
 //! round pair of equal discs is an upper bound for the conductance used, up to the rings.
 
-use std::f64::consts::PI;
-
 use crate::numerics::block_tridiagonal::Ladder;
 
 /// Rings of both plates around one bolt, as areas and shape factors; lengths in m.
@@ -95,169 +93,169 @@ struct Column {
     upper: f64,
     /// β: 1, or 1 + z2 Y/6 over a film.
     lower: f64,
-    /// Temperature difference that given fluxes on the outer faces use up, K.
+    /// Temperature difference that a given flux on the back uses up, K.
     fixed: f64,
 }
 
+/// What is the same in every ring.
+struct Constants {
+    depth: [f64; 2],
+    /// Conductivity times thickness of both plates, W/K.
+    sheet: [f64; 2],
+    /// From the mean of the second plate to the coolant, W/(m² K).
+    back: f64,
+    /// Given on the back, W/m².
+    back_flux: f64,
+    /// Column without heat given on its outer face.
+    plain: Column,
+    /// Column under an isothermal source.
+    heated: Column,
+    inlet: Inlet,
+}
+
+/// Columns of one ring and the heat that crosses them, before temperatures are known.
+#[derive(Clone, Copy, Default)]
+struct Coupling {
+    /// Σ A/(1/h + base) of the plain and of the isothermally heated columns, W/K.
+    conductance: [f64; 2],
+    /// Flux given on the outer face, W/m².
+    flux: f64,
+    /// Outer face held at the source temperature, m².
+    held: f64,
+    /// Faying area, m².
+    touching: f64,
+}
+
 impl Plates {
-    /// z = t/k of both plates, m² K/W.
-    fn depth(&self) -> [f64; 2] {
-        [0, 1].map(|plate| self.thickness[plate] / self.conductivity[plate])
-    }
-
-    /// Y = 1/(z2/3 + 1/h_s), W/(m² K): from the mean of the second plate to the coolant.
-    fn back_conductance(&self) -> f64 {
-        match self.outlet {
-            Outlet::Film(film) => (self.depth()[1] / 3.0 + film.recip()).recip(),
-            Outlet::Flux(_) | Outlet::Rim => 0.0,
-        }
-    }
-
-    /// Flux given on the back, W/m².
-    fn back_flux(&self) -> f64 {
-        match self.outlet {
-            Outlet::Flux(flux) => flux,
-            Outlet::Film(_) | Outlet::Rim => 0.0,
-        }
-    }
-
-    fn column(&self, heated: Heated) -> Column {
-        let [z1, z2] = self.depth();
-        let back = self.back_conductance();
-        let mut column = Column {
+    fn constants(&self) -> Constants {
+        let [z1, z2] = [0, 1].map(|k| self.thickness[k] / self.conductivity[k]);
+        let (back, back_flux) = match self.outlet {
+            Outlet::Film(film) => ((z2 / 3.0 + film.recip()).recip(), 0.0),
+            Outlet::Flux(flux) => (0.0, flux),
+            Outlet::Rim => (0.0, 0.0),
+        };
+        let plain = Column {
             base: (z1 + z2) / 3.0 - z2 * z2 * back / 36.0,
             upper: 1.0,
             lower: 1.0 + z2 * back / 6.0,
-            fixed: self.back_flux() * z2 / 6.0,
+            fixed: back_flux * z2 / 6.0,
         };
-        match heated {
-            Heated::Isothermal => {
-                column.base -= z1 / 12.0;
-                column.upper = 1.5;
-            }
-            Heated::Flux(flux) => column.fixed += flux * z1 / 6.0,
+        Constants {
+            depth: [z1, z2],
+            sheet: [0, 1].map(|k| self.thickness[k] * self.conductivity[k]),
+            back,
+            back_flux,
+            plain,
+            heated: Column {
+                base: plain.base - z1 / 12.0,
+                upper: 1.5,
+                ..plain
+            },
+            inlet: self.inlet,
         }
-        column
     }
 }
 
-/// What acts on the outer face above one column.
-#[derive(Clone, Copy, Debug, PartialEq)]
-enum Heated {
-    Isothermal,
-    Flux(f64),
-}
-
-/// Heated state and weight of the columns that share a ring.
-struct Mix {
-    columns: [(Column, f64); 2],
-    flux: f64,
-    isothermal_area: f64,
+impl Constants {
+    /// The two kinds of column with what given fluxes and the source use up of T1 − T2, K.
+    fn columns(&self, coupling: &Coupling) -> [(Column, f64, f64); 2] {
+        let [plain, heated] = coupling.conductance;
+        [
+            (
+                self.plain,
+                plain,
+                self.plain.fixed + coupling.flux * self.depth[0] / 6.0,
+            ),
+            (self.heated, heated, self.heated.fixed + 0.5),
+        ]
+    }
 }
 
 impl Rings {
-    fn count(&self) -> usize {
-        self.source_area.len()
-    }
-
-    /// The columns of one ring: the heated share of an isothermal zone apart, given flux smeared.
-    fn mix(&self, ring: usize, plates: &Plates) -> Mix {
-        let (heated, area) = (self.source_area[ring], self.plate_area[0][ring]);
+    /// The columns of one ring; heat given on part of a ring is smeared over it, a temperature
+    /// given on part of it acts on the same share of the faying area.
+    fn couple(&self, ring: usize, constants: &Constants, conductance: &[f64]) -> Coupling {
+        let (source, area) = (self.source_area[ring], self.plate_area[0][ring]);
         let share = if area > 0.0 {
-            (heated / area).min(1.0)
+            (source / area).min(1.0)
         } else {
             0.0
         };
-        let plain = |flux| plates.column(Heated::Flux(flux));
-        match plates.inlet {
-            Inlet::Flux(flux) => Mix {
-                columns: [(plain(flux * share), 1.0), (plain(0.0), 0.0)],
-                flux: flux * share,
-                isothermal_area: 0.0,
-            },
-            Inlet::Temperature => Mix {
-                columns: [
-                    (plates.column(Heated::Isothermal), share),
-                    (plain(0.0), 1.0 - share),
-                ],
-                flux: 0.0,
-                isothermal_area: heated,
-            },
-            Inlet::Rim => Mix {
-                columns: [(plain(0.0), 1.0), (plain(0.0), 0.0)],
-                flux: 0.0,
-                isothermal_area: 0.0,
-            },
-        }
-    }
-
-    /// Σ A/(1/h + base) over the patches of a ring, W/K.
-    fn coupling(&self, ring: usize, base: f64, conductance: &[f64]) -> f64 {
         let patches = self.first_patch[ring]..self.first_patch[ring + 1];
-        self.patch_area[patches.clone()]
-            .iter()
-            .zip(&conductance[patches])
-            .map(|(area, h)| area / (h.recip() + base))
-            .sum()
+        let areas = &self.patch_area[patches.clone()];
+        let through = |base: f64| -> f64 {
+            areas
+                .iter()
+                .zip(&conductance[patches.clone()])
+                .map(|(area, h)| area / (h.recip() + base))
+                .sum()
+        };
+        let mut coupling = Coupling {
+            touching: areas.iter().sum(),
+            ..Coupling::default()
+        };
+        let mut plain = 1.0;
+        match constants.inlet {
+            Inlet::Flux(flux) => coupling.flux = flux * share,
+            Inlet::Temperature if share > 0.0 => {
+                coupling.held = source;
+                coupling.conductance[1] = share * through(constants.heated.base);
+                plain = 1.0 - share;
+            }
+            Inlet::Temperature | Inlet::Rim => {}
+        }
+        if plain > 0.0 {
+            coupling.conductance[0] = plain * through(constants.plain.base);
+        }
+        coupling
     }
 
     /// Temperatures and heat for the conductance of each patch, W/(m² K), 0 and infinity allowed;
     /// none when no path leads from source to sink.
     pub fn flow(&self, plates: &Plates, conductance: &[f64]) -> Option<Flow> {
-        let count = self.count();
-        let depth = plates.depth();
-        let (back, back_flux) = (plates.back_conductance(), plates.back_flux());
-        let sheet = [0, 1].map(|plate| plates.thickness[plate] * plates.conductivity[plate]);
+        let count = self.source_area.len();
+        let constants = plates.constants();
+        let couplings: Vec<Coupling> = (0..count)
+            .map(|ring| self.couple(ring, &constants, conductance))
+            .collect();
         let mut ladder = Ladder::new(count);
         let mut load = vec![[0.0; 2]; count];
-        let mut couplings = vec![[0.0; 2]; count];
         for ring in 0..count {
-            let area = [self.plate_area[0][ring], self.plate_area[1][ring]];
-            if ring + 1 < count {
-                for plate in 0..2 {
-                    let link = sheet[plate] * self.shape[plate][ring];
-                    ladder.link(ring, plate, link);
-                }
-            }
-            let mix = self.mix(ring, plates);
-            let top = 3.0 / depth[0] * mix.isothermal_area;
-            ladder.rungs[ring][0] += top;
-            ladder.rungs[ring][2] += back * area[1];
-            load[ring][0] += top + mix.flux * area[0];
-            load[ring][1] -= back_flux * area[1];
-            for (index, (column, share)) in mix.columns.into_iter().enumerate() {
-                if share <= 0.0 {
-                    continue;
-                }
-                let coupling = share * self.coupling(ring, column.base, conductance);
-                couplings[ring][index] = coupling;
-                let Column { upper, lower, .. } = column;
-                let given = coupling * (column.fixed + (upper - 1.0));
-                let block = &mut ladder.rungs[ring];
-                block[0] += coupling * upper * upper;
-                block[1] -= coupling * upper * lower;
-                block[2] += coupling * lower * lower;
-                load[ring][0] += upper * given;
-                load[ring][1] -= lower * given;
-            }
             for plate in 0..2 {
+                if ring + 1 < count {
+                    ladder.link(
+                        ring,
+                        plate,
+                        constants.sheet[plate] * self.shape[plate][ring],
+                    );
+                }
                 // A plate without area here keeps a node of its own at the coolant's temperature.
-                if area[plate] <= 0.0 {
+                if self.plate_area[plate][ring] <= 0.0 {
                     ladder.rungs[ring][2 * plate] += 1.0;
                 }
             }
+            self.fill(
+                ring,
+                &constants,
+                &couplings[ring],
+                (&mut ladder.rungs[ring], &mut load[ring]),
+            );
         }
-        let rim = [0, 1].map(|plate| sheet[plate] * self.rim_shape[plate]);
-        let last = [0, 1].map(|plate| self.last(plate));
+        let [first, second] = [0, 1].map(|plate| {
+            (
+                self.last(plate),
+                constants.sheet[plate] * self.rim_shape[plate],
+            )
+        });
         if plates.inlet == Inlet::Rim {
-            ladder.rungs[last[0]][0] += rim[0];
-            load[last[0]][0] += rim[0];
+            ladder.rungs[first.0][0] += first.1;
+            load[first.0][0] += first.1;
         }
         match plates.outlet {
-            Outlet::Rim => ladder.rungs[last[1]][2] += rim[1],
+            Outlet::Rim => ladder.rungs[second.0][2] += second.1,
             // Given fluxes leave the level open: the last ring is tied to it, and as what enters
             // also leaves, the tie carries nothing.
-            Outlet::Flux(_) => ladder.rungs[last[1]][2] += sheet[1],
+            Outlet::Flux(_) => ladder.rungs[second.0][2] += constants.sheet[1],
             Outlet::Film(_) => {}
         }
         let temperatures = ladder.solution(load)?;
@@ -265,61 +263,77 @@ impl Rings {
             hottest: f64::NEG_INFINITY,
             ..Flow::default()
         };
-        for (ring, [t1, t2]) in temperatures.iter().copied().enumerate() {
-            let area = [self.plate_area[0][ring], self.plate_area[1][ring]];
-            let mix = self.mix(ring, plates);
-            let mut through = [0.0; 2];
-            for (index, (column, _)) in mix.columns.iter().enumerate() {
-                through[index] = couplings[ring][index]
-                    * (column.upper * t1 - column.lower * t2 - (column.upper - 1.0) - column.fixed);
-            }
-            let crossing = through[0] + through[1];
-            let touching: f64 = self.patch_area[self.first_patch[ring]..self.first_patch[ring + 1]]
-                .iter()
-                .sum();
-            flow.plate[0] += t1 * area[0];
-            flow.plate[1] += t2 * area[1];
-            // q_t and q_b times area, W.
-            let isothermal = plates.inlet == Inlet::Temperature;
-            let entering = if isothermal {
-                3.0 / depth[0] * mix.isothermal_area * (1.0 - t1) - 0.5 * through[0]
-            } else {
-                mix.flux * area[0]
-            };
-            let leaving = back_flux * area[1] + back * (t2 * area[1] - crossing * depth[1] / 6.0);
-            let face = t1 * area[0] + depth[0] * (entering / 3.0 + crossing / 6.0);
-            if area[0] > 0.0 {
-                let share = self.source_area[ring] / area[0];
-                if isothermal {
-                    flow.source += self.source_area[ring];
-                    flow.hottest = flow
-                        .hottest
-                        .max(if share > 0.0 { 1.0 } else { face / area[0] });
-                } else {
-                    flow.source += face * share;
-                    flow.hottest = flow.hottest.max(face / area[0]);
-                }
-                let under = if isothermal { share * touching } else { 0.0 };
-                // Face fluxes over the faying area alone.
-                let inlet_flux = if isothermal {
-                    3.0 / depth[0] * under * (1.0 - t1) - 0.5 * through[0]
-                } else {
-                    mix.flux * touching
-                };
-                let outlet_flux =
-                    back_flux * touching + back * (t2 * touching - crossing * depth[1] / 6.0);
-                flow.interface += (t1 - t2) * touching
-                    - crossing * (depth[0] + depth[1]) / 3.0
-                    - inlet_flux * depth[0] / 6.0
-                    - outlet_flux * depth[1] / 6.0;
-            }
-            flow.back += t2 * area[1] - depth[1] * (leaving / 3.0 + crossing / 6.0);
-            flow.heat += match plates.inlet {
-                Inlet::Rim => crossing,
-                Inlet::Flux(_) | Inlet::Temperature => entering,
-            };
+        for (ring, mean) in temperatures.into_iter().enumerate() {
+            self.read(ring, &constants, (&couplings[ring], mean), &mut flow);
         }
         Some(flow)
+    }
+
+    /// Puts the columns of one ring into its block and its right-hand side.
+    fn fill(
+        &self,
+        ring: usize,
+        constants: &Constants,
+        coupling: &Coupling,
+        (block, load): (&mut [f64; 3], &mut [f64; 2]),
+    ) {
+        let [first, second] = [0, 1].map(|plate| self.plate_area[plate][ring]);
+        let held = 3.0 / constants.depth[0] * coupling.held;
+        block[0] += held;
+        block[2] += constants.back * second;
+        load[0] += held + coupling.flux * first;
+        load[1] -= constants.back_flux * second;
+        for (column, through, given) in constants.columns(coupling) {
+            block[0] += through * column.upper * column.upper;
+            block[1] -= through * column.upper * column.lower;
+            block[2] += through * column.lower * column.lower;
+            load[0] += column.upper * through * given;
+            load[1] -= column.lower * through * given;
+        }
+    }
+
+    /// Adds what one ring tells to the sums.
+    fn read(
+        &self,
+        ring: usize,
+        constants: &Constants,
+        (coupling, [t1, t2]): (&Coupling, [f64; 2]),
+        flow: &mut Flow,
+    ) {
+        let [z1, z2] = constants.depth;
+        let [first, second] = [0, 1].map(|plate| self.plate_area[plate][ring]);
+        let [plain, heated] = constants.columns(coupling).map(|(column, through, given)| {
+            through * (column.upper * t1 - column.lower * t2 - given)
+        });
+        let crossing = plain + heated;
+        let held_share = if first > 0.0 {
+            coupling.held / first
+        } else {
+            0.0
+        };
+        // Fluxes times area on the outer faces, over a part of the ring.
+        let entering = |area: f64| {
+            coupling.flux * area + 3.0 / z1 * held_share * area * (1.0 - t1) - 0.5 * heated
+        };
+        let leaving = |area: f64| {
+            constants.back_flux * area + constants.back * (t2 * area - crossing * z2 / 6.0)
+        };
+        flow.plate[0] += t1 * first;
+        flow.plate[1] += t2 * second;
+        flow.back += t2 * second - z2 * (leaving(second) / 3.0 + crossing / 6.0);
+        flow.heat += match constants.inlet {
+            Inlet::Rim => crossing,
+            Inlet::Flux(_) | Inlet::Temperature => entering(first),
+        };
+        flow.interface += (t1 - t2) * coupling.touching
+            - crossing * (z1 + z2) / 3.0
+            - (entering(coupling.touching) * z1 + leaving(coupling.touching) * z2) / 6.0;
+        if first > 0.0 {
+            let face = t1 + z1 * (entering(first) / 3.0 + crossing / 6.0) / first;
+            let face = if coupling.held > 0.0 { 1.0 } else { face };
+            flow.source += face * self.source_area[ring];
+            flow.hottest = flow.hottest.max(face);
+        }
     }
 
     /// The last ring of a plate that has any area.
@@ -331,28 +345,33 @@ impl Rings {
     }
 }
 
-/// Radial shape factors of rings with given areas, mapped to circles of equal area about a hole:
-/// 2π/ln(r_{j+1}/r_j) between ring centres, and from the last centre to the rim.
-pub fn shapes(hole_radius: f64, areas: &[f64]) -> (Vec<f64>, f64) {
+/// Radial shape factors between ring centres, and from the last centre to the rim.
+///
+/// ```text
+/// 1/S_j = ln(e/r_j)/Θ_j + ln(r_{j+1}/e)/Θ_{j+1},   Θ = 2A/(e_out² − e_in²)
+/// ```
+///
+/// e is the radius between the rings and Θ the angle over which the plate is there: 2π for a
+/// whole ring, less where an edge or a neighbour's cell cuts it.
+pub fn shapes(hole_radius: f64, edges: &[f64], areas: &[f64]) -> (Vec<f64>, f64) {
     let mut shape = vec![0.0; areas.len().saturating_sub(1)];
-    let mut squared = hole_radius * hole_radius;
-    let mut inner = hole_radius;
-    let mut last: Option<(usize, f64)> = None;
+    let mut rim = 0.0;
+    let mut behind: Option<f64> = None;
     for (ring, area) in areas.iter().enumerate() {
-        squared += area / PI;
-        let outer = squared.sqrt();
-        if *area > 0.0 {
-            let centre = 0.5 * (inner + outer);
-            if let Some((previous, before)) = last
-                && previous + 1 == ring
-            {
-                shape[previous] = 2.0 * PI / (centre / before).ln();
-            }
-            last = Some((ring, centre));
+        let (inner, outer) = (edges[ring].max(hole_radius), edges[ring + 1]);
+        if *area <= 0.0 {
+            behind = None;
+            continue;
         }
-        inner = outer;
+        let centre = 0.5 * (inner + outer);
+        let angle = 2.0 * area / ((outer - inner) * (outer + inner));
+        if let Some(before) = behind {
+            shape[ring - 1] = (before + (centre / inner).ln() / angle).recip();
+        }
+        let ahead = (outer / centre).ln() / angle;
+        rim = ahead.recip();
+        behind = Some(ahead);
     }
-    let rim = last.map_or(0.0, |(_, centre)| 2.0 * PI / (inner / centre).ln());
     (shape, rim)
 }
 
@@ -375,76 +394,4 @@ pub fn edges(hole_radius: f64, contact_radius: f64, rim_radius: f64, rings: usiz
     });
     let growing = (1..=outside).map(|ring| c * (rim_radius / c).powf(ring as f64 / outside as f64));
     clustered.chain(growing).collect()
-}
-
-/// Two equal annular plates about one bolt.
-#[derive(Clone, Debug, PartialEq)]
-pub struct Annulus {
-    /// Radii that bound the rings, m, rising from the hole to the rim.
-    pub edges: Vec<f64>,
-    /// Thickness of both plates, m.
-    pub thickness: [f64; 2],
-    /// Conductivity of both plates, W/(m K).
-    pub conductivity: [f64; 2],
-}
-
-/// Where heat enters and leaves an annular pair.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
-pub enum Ends {
-    /// Both outer faces isothermal.
-    Isothermal,
-    /// Uniform flux on both outer faces; area-mean temperatures.
-    Flux,
-    /// Rim of the first plate to rim of the second, outer faces insulated.
-    Lap,
-}
-
-impl Annulus {
-    /// The rings of the pair, one patch each.
-    pub fn rings(&self) -> Rings {
-        let area: Vec<f64> = self
-            .edges
-            .windows(2)
-            .map(|pair| PI * (pair[1] - pair[0]) * (pair[1] + pair[0]))
-            .collect();
-        let (shape, rim_shape) = shapes(self.edges[0], &area);
-        Rings {
-            plate_area: [area.clone(), area.clone()],
-            source_area: area.clone(),
-            shape: [shape.clone(), shape],
-            rim_shape: [rim_shape; 2],
-            first_patch: (0..=area.len()).collect(),
-            patch_area: area,
-        }
-    }
-
-    /// Resistance between the ends for a conductance of the radius, W/(m² K), K/W.
-    ///
-    /// The conductance is taken at ring centres. Infinite where no path leads through.
-    pub fn resistance(&self, conductance: impl Fn(f64) -> f64, ends: Ends) -> f64 {
-        let rings = self.rings();
-        let conductance: Vec<f64> = self
-            .edges
-            .windows(2)
-            .map(|pair| conductance(0.5 * (pair[0] + pair[1])))
-            .collect();
-        let face: f64 = rings.patch_area.iter().sum();
-        let (inlet, outlet) = match ends {
-            Ends::Isothermal => (Inlet::Temperature, Outlet::Film(f64::INFINITY)),
-            Ends::Flux => (Inlet::Flux(face.recip()), Outlet::Flux(face.recip())),
-            Ends::Lap => (Inlet::Rim, Outlet::Rim),
-        };
-        let plates = Plates {
-            thickness: self.thickness,
-            conductivity: self.conductivity,
-            inlet,
-            outlet,
-        };
-        rings
-            .flow(&plates, &conductance)
-            .map_or(f64::INFINITY, |flow| match ends {
-                Ends::Isothermal | Ends::Lap => flow.heat.recip(),
-                Ends::Flux => (flow.source - flow.back) / face,
-            })
-    }
 }

@@ -106,7 +106,7 @@ fn cell(plan: &Plan, view: &View, bolt: usize, count: usize) -> Cell {
     let head_area: f64 = head.iter().sum();
     let holes = plan.sites[bolt].hole_radius;
     let [(shape1, rim1), (shape2, rim2)] =
-        [0, 1].map(|k| network::shapes(holes[k], &plate_area[k]));
+        [0, 1].map(|k| network::shapes(holes[k], &edges, &plate_area[k]));
     let mut rings = Rings {
         source_area: between(&|radius| view.source.area_within(radius)),
         plate_area,
