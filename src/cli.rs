@@ -4,6 +4,7 @@ mod chain;
 mod check;
 mod console;
 mod draw;
+mod drawings;
 mod estimate;
 mod explain;
 mod hidden;

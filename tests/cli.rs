@@ -135,6 +135,9 @@ fn a_missing_file_is_named_with_the_way_on() {
 fn a_mistyped_file_name_meets_its_neighbour() {
     let folder = tempdir().unwrap();
     fs::write(folder.path().join("converter.toml"), "x = 1").unwrap();
+    fs::write(folder.path().join("box.toml"), "x = 1").unwrap();
+    let short = within(&folder).args(["check", "box"]).assert().code(2);
+    assert!(stderr(&short).contains("did you mean `box.toml`?"));
     for typed in ["convertor.toml", "converter"] {
         let missing = within(&folder).args(["check", typed]).assert().code(2);
         let told = stderr(&missing);
@@ -323,12 +326,16 @@ fn a_target_that_cannot_be_written_is_refused_before_anything_is_computed() {
     let folder = tempdir().unwrap();
     fs::create_dir(folder.path().join("folder")).unwrap();
     fs::write(folder.path().join("there.svg"), "kept").unwrap();
-    for out in ["folder", "absent/joint.toml"] {
-        within(&folder)
+    for (out, word) in [
+        ("folder", "is a folder"),
+        ("absent/joint.toml", "no folder"),
+    ] {
+        let refused = within(&folder)
             .args(["new", out])
             .assert()
             .code(2)
             .stdout_eq("");
+        assert!(stderr(&refused).contains(word), "{}", stderr(&refused));
     }
     // The joint does not exist: were it read first, the message would name it.
     for (out, word) in [

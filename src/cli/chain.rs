@@ -5,6 +5,7 @@ use crate::{
     cli::console::Trouble,
     diagnostic::{self, Colour, Fault},
     estimate::{Estimate, FieldMap, RingRow, TorqueSweep},
+    figures::{self, Drawing, Format},
     joint::Joint,
     report::listing::Listing,
     units::{self, Quantity},
@@ -26,13 +27,6 @@ pub struct SweepOptions {
     pub steps: usize,
     pub draws: u32,
     pub seed: u64,
-}
-
-/// Encoding of a figure.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
-pub enum Encoding {
-    Svg,
-    Png,
 }
 
 const NOT_BUILT: &str = "not built";
@@ -99,31 +93,7 @@ pub fn listings() -> Vec<Listing> {
     Vec::new()
 }
 
-/// One figure of `draw`.
-pub struct Figure {
-    pub name: &'static str,
-    pub draw: fn(&Joint, Encoding) -> Result<Vec<u8>, Trouble>,
-}
-
-/// The figures of `draw`, in the order of force and heat.
-pub const FIGURES: &[Figure] = &[
-    Figure {
-        name: "pressure",
-        draw: |joint, _| {
-            field_map(joint, 1)?;
-            not_built()
-        },
-    },
-    Figure {
-        name: "conductance",
-        draw: |_, _| not_built(),
-    },
-    Figure {
-        name: "cumulative",
-        draw: |_, _| not_built(),
-    },
-];
-
-pub fn torque_figure(_sweep: &TorqueSweep, _encoding: Encoding) -> Result<Vec<u8>, Trouble> {
-    not_built()
+/// A drawing as a file of the format.
+pub fn render(drawing: &Drawing, format: Format) -> Result<Vec<u8>, Trouble> {
+    figures::render(drawing, format).map_err(|fault| Trouble::Failure(fault.to_string()))
 }

@@ -1,16 +1,23 @@
 //! `draw`: the fields of a joint as figures.
 
-use crate::cli::{
-    chain::{self, Encoding},
-    check,
-    console::{Console, Outcome, Trouble},
-    output::{Existing, Target},
+use crate::{
+    cli::{
+        chain::{self, Options},
+        check,
+        console::{Console, Outcome, Trouble},
+        drawings,
+        output::{Existing, Target},
+    },
+    figures::Format,
 };
 use clap::{Args, ValueEnum};
 use std::{
     fs,
     path::{Path, PathBuf},
 };
+
+/// Cells across a map: finer than print shows.
+const COLUMNS: usize = 400;
 
 /// Draw pressure, local conductance and its growth around the bolts
 #[derive(Debug, Args)]
@@ -28,7 +35,7 @@ pub struct Draw {
         default_value = "svg",
         hide_possible_values = true
     )]
-    format: Format,
+    format: Formats,
     /// Override a field: --set 'plate.box.thickness="6 mm"'
     #[arg(long = "set", value_name = "KEY=VALUE")]
     sets: Vec<String>,
@@ -39,7 +46,7 @@ pub struct Draw {
 
 /// Format of the figures.
 #[derive(Clone, Copy, Debug, ValueEnum)]
-enum Format {
+enum Formats {
     /// Drawing
     Svg,
     /// Picture
@@ -51,17 +58,12 @@ enum Format {
 impl Draw {
     /// Draws every figure; checks every target before computing.
     pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
-        let encodings: &[Encoding] = match self.format {
-            Format::Svg => &[Encoding::Svg],
-            Format::Png => &[Encoding::Png],
-            Format::Both => &[Encoding::Svg, Encoding::Png],
+        let formats: &[Format] = match self.format {
+            Formats::Svg => &[Format::Svg],
+            Formats::Png => &[Format::Png],
+            Formats::Both => &[Format::Svg, Format::Png],
         };
         let existing = Existing::from_force(self.force);
-        let names = chain::FIGURES.iter().flat_map(|figure| {
-            encodings
-                .iter()
-                .map(move |encoding| (figure, encoding, file_name(figure.name, *encoding)))
-        });
         if self.out.exists() {
             if !self.out.is_dir() {
                 return Err(Trouble::usage(
@@ -69,29 +71,37 @@ impl Draw {
                     "--out names a folder",
                 ));
             }
-            for (_, _, name) in names.clone() {
-                Target::new(&self.out.join(name), existing)?;
+            for name in drawings::NAMES {
+                for format in formats {
+                    Target::new(&self.path(name, *format), existing)?;
+                }
             }
         }
         let (_, joint) =
             check::read(&self.file, &self.sets, console).map_err(|refused| refused.trouble())?;
-        let drawn = names
-            .map(|(figure, encoding, name)| Ok((name, (figure.draw)(&joint, *encoding)?)))
-            .collect::<Result<Vec<_>, Trouble>>()?;
+        let nominal = chain::estimate(&joint, &Options { draws: 0, seed: 1 })?;
+        let field = chain::field_map(&joint, COLUMNS)?;
+        let rings = chain::ring_tables(&joint)?;
+        let mut files = Vec::new();
+        for (name, drawing) in drawings::of_joint(&joint, &nominal, (&field, &rings)) {
+            for format in formats {
+                let bytes = chain::render(&drawing, *format)?;
+                files.push((self.path(name, *format), bytes));
+            }
+        }
         make(&self.out)?;
-        for (name, bytes) in drawn {
-            let path = self.out.join(name);
+        for (path, bytes) in files {
             Target::new(&path, existing)?.write(&bytes)?;
             console.message(&format!("wrote {}\n", path.display()));
         }
         Ok(Outcome::Done)
     }
-}
 
-fn file_name(figure: &str, encoding: Encoding) -> String {
-    match encoding {
-        Encoding::Svg => format!("{figure}.svg"),
-        Encoding::Png => format!("{figure}.png"),
+    fn path(&self, name: &str, format: Format) -> PathBuf {
+        self.out.join(match format {
+            Format::Svg => format!("{name}.svg"),
+            Format::Png => format!("{name}.png"),
+        })
     }
 }
 

@@ -2,12 +2,13 @@
 
 use crate::{
     cli::{
-        chain::{self, Encoding, SweepOptions},
+        chain::{self, SweepOptions},
         check,
         console::{Console, Layout, Outcome, Trouble},
         estimate::Draws,
         output::{Existing, Target},
     },
+    figures::{Drawing, Format},
     report::{json, sweep},
 };
 use clap::Args;
@@ -61,7 +62,7 @@ impl Torque {
         }
         let figure = match &self.out {
             Some(path) => Some((
-                encoding(path)?,
+                format(path)?,
                 Target::new(path, Existing::from_force(self.force))?,
             )),
             None => None,
@@ -87,8 +88,8 @@ impl Torque {
             seed: self.draws.seed,
         };
         let found = chain::torque_sweep(&joint, &options)?;
-        if let Some((encoding, target)) = figure {
-            target.write(&chain::torque_figure(&found, encoding)?)?;
+        if let Some((format, target)) = figure {
+            target.write(&chain::render(&Drawing::Torque(found.clone()), format)?)?;
             console.message(&format!("wrote {}\n", target.path.display()));
         }
         if self.json {
@@ -100,15 +101,15 @@ impl Torque {
     }
 }
 
-fn encoding(path: &Path) -> Result<Encoding, Trouble> {
+fn format(path: &Path) -> Result<Format, Trouble> {
     let ending = path
         .extension()
         .and_then(|ending| ending.to_str())
         .unwrap_or("")
         .to_ascii_lowercase();
     match ending.as_str() {
-        "svg" => Ok(Encoding::Svg),
-        "png" => Ok(Encoding::Png),
+        "svg" => Ok(Format::Svg),
+        "png" => Ok(Format::Png),
         _ => Err(Trouble::usage(
             format!("`{}` ends in neither .svg nor .png", path.display()),
             "the ending chooses the format of the figure",
