@@ -1,5 +1,208 @@
-//! The whole chain on one page.
+//! The whole chain on one page: a joint, torque first, resistance last.
 
+mod cautions;
+mod chain;
+mod forces;
+mod maps;
 mod results;
+mod surfaces;
 
+pub use cautions::sweep_cautions;
+pub use chain::{Chain, State};
+pub use forces::Strength;
+pub use maps::{field_map, ring_tables};
 pub use results::*;
+
+pub use crate::resistance::RingRow;
+
+use crate::{
+    joint::{Fastener, Joint, Sink, Zone},
+    resistance::Path,
+};
+
+/// How many draws, from which seed.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub struct Options {
+    /// Number of draws; none gives nominal results without a band.
+    pub draws: u32,
+    /// Seed of the draws.
+    pub seed: u64,
+}
+
+/// Where every uncertain input of one realisation lies; all zero is the nominal chain.
+///
+/// Inputs with bounds lie at a place from −1 (low) to +1 (high); inputs with a factor lie at a
+/// number of standard deviations.
+#[derive(Clone, Copy, Debug, Default, PartialEq)]
+pub struct Realisation {
+    /// Friction of all bolts, place.
+    pub friction: f64,
+    /// Torque tool, place.
+    pub tool: f64,
+    /// Given preload or scatter of the method, place.
+    pub preload: f64,
+    /// Share of the guide losses that acts when the file asks for none, 0 to 1.
+    pub loss: f64,
+    /// Roughness of the warm and the cold face, place.
+    pub roughness: [f64; 2],
+    /// Slope of the warm and the cold face, standard deviations.
+    pub slope: [f64; 2],
+    /// Hardness of both faces, place.
+    pub hardness: f64,
+    /// Conductivity of the warm and the cold plate, place.
+    pub conductivity: [f64; 2],
+    /// Law of the solid spots or own measurements, standard deviations.
+    pub law: f64,
+    /// Filler resistance, standard deviations.
+    pub filler: f64,
+    /// Gas parameter, standard deviations.
+    pub gas: f64,
+    /// Form of the pressure field and of the spreading model, place.
+    pub field: f64,
+}
+
+/// Why a chain gave no number.
+#[derive(Clone, Debug, PartialEq, thiserror::Error)]
+pub enum Failure {
+    /// A property is not known at the temperature of a case.
+    #[error("{0}")]
+    Cold(String),
+    /// A face has no hardness and no other law is given.
+    #[error("plate `{0}` has no hardness, so its bare contact cannot be computed; give `hardness`, a filler or measured points")]
+    NoHardness(String),
+    /// The heated zone or a cell carries nothing.
+    #[error("the conduction network of case `{case}` did not give a number ({reading}); check the file with `ringsum check`")]
+    NotFinite {
+        /// Name of the case.
+        case: &'static str,
+        /// What was not finite.
+        reading: String,
+    },
+    /// No clamp force is left.
+    #[error("no clamp force is left in service at {bolts} of {of} bolts in case `{case}`, so the joint is open there; raise the preload, lengthen the grip or match the expansion")]
+    Open {
+        /// Bolts without force.
+        bolts: usize,
+        /// All bolts.
+        of: usize,
+        /// Name of the case.
+        case: &'static str,
+    },
+    /// A sweep asks for a group that is not there.
+    #[error("there is no fastener group {asked}; the joint has {known}")]
+    NoSuchGroup {
+        /// Number asked for, from 1.
+        asked: usize,
+        /// Number of groups.
+        known: usize,
+    },
+    /// A sweep of torque over a group whose preload is given.
+    #[error("fastener group {group} states its preload, not a torque; give `torque` and `friction` to sweep it")]
+    NotByTorque {
+        /// Number of the group, from 1.
+        group: usize,
+    },
+    /// A sweep without a range.
+    #[error("torque cannot be swept from {from} to {to} N·m; it must rise from above zero in at least two steps")]
+    SweepRange {
+        /// Lowest torque, N m.
+        from: f64,
+        /// Highest torque, N m.
+        to: f64,
+    },
+}
+
+/// The chain at nominal inputs: every result without a band.
+pub fn nominal(chain: &Chain, options: &Options) -> Result<Estimate, Failure> {
+    let joint = chain.joint();
+    let cases = (0..joint.service.cases.len())
+        .map(|case| case_result(chain, case))
+        .collect::<Result<Vec<CaseResult>, Failure>>()?;
+    let (source_plane, sink_plane) = planes(joint);
+    Ok(Estimate {
+        title: joint.title.clone(),
+        seed: options.seed,
+        draws: options.draws,
+        field: "cone",
+        resolution: "normal",
+        source_plane,
+        sink_plane,
+        heat: joint.service.heat,
+        cautions: cautions::gathered(chain, &cases),
+        cases,
+        assumptions: joint.assumptions.clone(),
+    })
+}
+
+/// One thermal case, upstream first: force, pressure, conductance, resistance, temperature.
+fn case_result(chain: &Chain, case: usize) -> Result<CaseResult, Failure> {
+    let joint = chain.joint();
+    let named = &joint.service.cases[case];
+    let state = chain.state(case, &Realisation::default())?;
+    let open = state.forces.iter().filter(|force| **force <= 0.0).count();
+    if open > 0 {
+        return Err(Failure::Open {
+            bolts: open,
+            of: state.forces.len(),
+            case: named.name,
+        });
+    }
+    let bolts = chain.bolts(case, &state);
+    let pressure = chain.pressure(&state);
+    let path = &state.path;
+    Ok(CaseResult {
+        name: named.name,
+        sink_temperature: named.temperature,
+        bolts,
+        pressure,
+        results: results(path),
+        resistance_lower: Some(path.resistance_lower),
+        resistance_upper: path.resistance_upper,
+        numerical_error: chain.ring_error(&state),
+        footprint: chain.footprint(),
+        rise: joint.service.heat.map(|heat| Rise {
+            source: Band::nominal(heat * path.source_to_sink),
+            hottest: Band::nominal(heat * path.hottest),
+            interface_drop: Band::nominal(heat * path.interface_drop),
+            coolant_drop: path.coolant_drop.map(|drop| heat * drop),
+        }),
+        requirement: None,
+        drivers: Vec::new(),
+    })
+}
+
+fn results(path: &Path) -> Results {
+    let plane = |resistance: f64| PlaneResult {
+        resistance: Band::nominal(resistance),
+    };
+    Results {
+        contact: plane(path.contact.recip()),
+        node_to_node: plane(path.node_to_node),
+        added_by_joint: plane(path.added_by_joint),
+        source_to_sink: plane(path.source_to_sink),
+        perfect_contact: plane(path.perfect_contact),
+    }
+}
+
+/// Names of the planes between which source to sink stands.
+fn planes(joint: &Joint) -> (String, String) {
+    let warm = &joint.warm().name;
+    let cold = &joint.cold().name;
+    let source = match joint.source.zone {
+        Zone::Face => format!("outer face of {warm}, mean"),
+        Zone::Rectangle { .. } | Zone::Disc { .. } => format!("heated zone on {warm}, mean"),
+    };
+    let sink = match joint.sink {
+        Sink::IsothermalBack => format!("back of {cold}, one temperature"),
+        Sink::Film(_) => format!("back of {cold}, mean surface"),
+        Sink::Rim => format!("rim of {cold}, one temperature"),
+    };
+    (source, sink)
+}
+
+/// A fastener group for people: `M5 A2-70, 6 places`.
+pub fn group_label(group: &Fastener) -> String {
+    let count = group.places.len();
+    let places = if count == 1 { "place" } else { "places" };
+    format!("{} {}, {count} {places}", group.thread.name, group.grade.name)
+}

@@ -48,7 +48,8 @@ fn modules_name_only_modules_upstream_of_them() {
             .find(|(name, _)| *name == module)
             .map_or(&[][..], |(_, barred)| barred);
         for (other_place, other) in ORDER.iter().enumerate() {
-            let upstream = other_place < place || TOP.contains(&module.as_str()) && TOP.contains(other);
+            let upstream =
+                other_place < place || TOP.contains(&module.as_str()) && TOP.contains(other);
             if *other != module && (!upstream || barred.contains(other)) && mentions(&text, other) {
                 offences.push(format!("{module} must not use {other}"));
             }
@@ -60,9 +61,22 @@ fn modules_name_only_modules_upstream_of_them() {
 #[test]
 fn physics_does_not_read_print_or_draw_random_numbers() {
     const FORBIDDEN: &[&str] = &[
-        "std::fs", "std::io", "std::env", "println!", "eprintln!", "rand::", "Sobol", "toml::",
+        "std::fs",
+        "std::io",
+        "std::env",
+        "println!",
+        "eprintln!",
+        "rand::",
+        "Sobol",
+        "toml::",
     ];
-    const PHYSICS: &[&str] = &["preload", "pressure", "conductance", "resistance", "estimate"];
+    const PHYSICS: &[&str] = &[
+        "preload",
+        "pressure",
+        "conductance",
+        "resistance",
+        "estimate",
+    ];
     for (module, text) in modules() {
         for word in FORBIDDEN {
             let offends = PHYSICS.contains(&module.as_str()) && before_tests(&text).contains(word);
@@ -100,7 +114,9 @@ fn mentions(text: &str, other: &str) -> bool {
         let path = if rest.starts_with('{') {
             rest.split(';').next().unwrap_or(rest)
         } else {
-            rest.split([';', ':', '(', '<', ' ', '\n']).next().unwrap_or(rest)
+            rest.split([';', ':', '(', '<', ' ', '\n'])
+                .next()
+                .unwrap_or(rest)
         };
         path.split(|c: char| !c.is_alphanumeric() && c != '_')
             .any(|word| word == other)

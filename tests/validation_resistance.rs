@@ -5,7 +5,10 @@ use std::{collections::BTreeMap, f64::consts::PI};
 use ringsum::{
     joint::{ConeRule, ConeShape},
     pressure::{Cone, Pair, cone},
-    resistance::{annulus::{Annulus, Ends}, network::edges},
+    resistance::{
+        annulus::{Annulus, Ends},
+        network::edges,
+    },
 };
 use serde::Deserialize;
 
@@ -97,12 +100,23 @@ fn network_gives_the_listed_resistances_with_the_closed_form_field() {
         let annulus = case.annulus(cone.contact_radius, 600);
         for (name, heat) in &case.bc {
             for (biot, listed) in &heat.R_default_power {
-                let h = |r: f64| biot.parse::<f64>().unwrap() * cone.pressure(r, case.force()).powf(0.95);
+                let h = |r: f64| {
+                    biot.parse::<f64>().unwrap() * cone.pressure(r, case.force()).powf(0.95)
+                };
                 let found = annulus.resistance(h, ends(name));
-                if (found/listed-1.0).abs() > 1e-3 { println!("{} {name} {biot}: {found} {listed} {}", case.id, found/listed-1.0); }
-                let g=heat.R_with_gap[biot];
-                let f = annulus.resistance(|r| h(r)+0.02*biot.parse::<f64>().unwrap(), ends(name));
-                if (f/g-1.0).abs() > 1e-3 {  println!("   gap {} {name} {biot}: {f} {g} {}", case.id, f/g-1.0); }
+                if (found / listed - 1.0).abs() > 1e-3 {
+                    println!(
+                        "{} {name} {biot}: {found} {listed} {}",
+                        case.id,
+                        found / listed - 1.0
+                    );
+                }
+                let g = heat.R_with_gap[biot];
+                let f =
+                    annulus.resistance(|r| h(r) + 0.02 * biot.parse::<f64>().unwrap(), ends(name));
+                if (f / g - 1.0).abs() > 1e-3 {
+                    println!("   gap {} {name} {biot}: {f} {g} {}", case.id, f / g - 1.0);
+                }
             }
         }
     }

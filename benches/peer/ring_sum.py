@@ -16,7 +16,7 @@ def conductance(pressure, law):
     lam = np.sqrt(2.0) * erfcinv(2.0 * pressure / (law["f"] * law["hardness"]))
     relative = pressure / law["hardness"]
     closure = 1.0 - np.sqrt(relative)
-    return law["front"] * np.exp(-0.5 * lam * lam) / (closure * np.sqrt(closure))
+    return law["open"] + law["front"] * np.exp(-0.5 * lam * lam) / (closure * np.sqrt(closure))
 
 
 def ring_sums(forces, rings, law):

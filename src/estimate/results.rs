@@ -2,7 +2,7 @@
 
 use crate::{
     diagnostic::{Assumption, Caution},
-    joint::{RequirementKind, Limit},
+    joint::{Limit, RequirementKind},
 };
 
 /// Low, nominal and high of one number; low and high are absent when no draws were made.
@@ -251,21 +251,4 @@ pub struct FieldMap {
     pub pressure: Vec<f64>,
     /// Local conductance, W/(m² K), likewise.
     pub conductance: Vec<f64>,
-}
-
-/// One ring around one bolt.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct RingRow {
-    /// Inner and outer radius, m.
-    pub radius: [f64; 2],
-    /// Area inside the bolt's own cell, m².
-    pub area: f64,
-    /// Mean pressure, Pa.
-    pub pressure: f64,
-    /// Local conductance, W/(m² K).
-    pub conductance: f64,
-    /// Conductance of the ring, W/K.
-    pub share: f64,
-    /// Sum from the hole to this ring, W/K.
-    pub cumulative: f64,
 }
