@@ -68,10 +68,14 @@ pub enum Failure {
     #[error("{0}")]
     Cold(String),
     /// A face has no hardness and no other law is given.
-    #[error("plate `{0}` has no hardness, so its bare contact cannot be computed; give `hardness`, a filler or measured points")]
+    #[error(
+        "plate `{0}` has no hardness, so its bare contact cannot be computed; give `hardness`, a filler or measured points"
+    )]
     NoHardness(String),
     /// The heated zone or a cell carries nothing.
-    #[error("the conduction network of case `{case}` did not give a number ({reading}); check the file with `ringsum check`")]
+    #[error(
+        "the conduction network of case `{case}` did not give a number ({reading}); check the file with `ringsum check`"
+    )]
     NotFinite {
         /// Name of the case.
         case: &'static str,
@@ -79,7 +83,9 @@ pub enum Failure {
         reading: String,
     },
     /// No clamp force is left.
-    #[error("no clamp force is left in service at {bolts} of {of} bolts in case `{case}`, so the joint is open there; raise the preload, lengthen the grip or match the expansion")]
+    #[error(
+        "no clamp force is left in service at {bolts} of {of} bolts in case `{case}`, so the joint is open there; raise the preload, lengthen the grip or match the expansion"
+    )]
     Open {
         /// Bolts without force.
         bolts: usize,
@@ -97,13 +103,17 @@ pub enum Failure {
         known: usize,
     },
     /// A sweep of torque over a group whose preload is given.
-    #[error("fastener group {group} states its preload, not a torque; give `torque` and `friction` to sweep it")]
+    #[error(
+        "fastener group {group} states its preload, not a torque; give `torque` and `friction` to sweep it"
+    )]
     NotByTorque {
         /// Number of the group, from 1.
         group: usize,
     },
     /// A sweep without a range.
-    #[error("torque cannot be swept from {from} to {to} N·m; it must rise from above zero in at least two steps")]
+    #[error(
+        "torque cannot be swept from {from} to {to} N·m; it must rise from above zero in at least two steps"
+    )]
     SweepRange {
         /// Lowest torque, N m.
         from: f64,
@@ -204,5 +214,8 @@ fn planes(joint: &Joint) -> (String, String) {
 pub fn group_label(group: &Fastener) -> String {
     let count = group.places.len();
     let places = if count == 1 { "place" } else { "places" };
-    format!("{} {}, {count} {places}", group.thread.name, group.grade.name)
+    format!(
+        "{} {}, {count} {places}",
+        group.thread.name, group.grade.name
+    )
 }

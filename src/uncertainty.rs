@@ -169,7 +169,11 @@ fn correlation(inputs: impl Iterator<Item = f64> + Clone, outcome: &[f64]) -> f6
         of_out += (y - mean_out).powi(2);
     }
     let correlation = both / (of_in * of_out).sqrt();
-    if correlation.is_finite() { correlation } else { 0.0 }
+    if correlation.is_finite() {
+        correlation
+    } else {
+        0.0
+    }
 }
 
 fn apply(draws: &Draws, joint: &Joint, case: &mut CaseResult) {

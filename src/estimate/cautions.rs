@@ -18,7 +18,6 @@ const NOTICEABLE: f64 = 40.0;
 const BURNS: f64 = 333.15;
 /// Source to sink this many times the contact-only value is limited by spreading.
 const SPREADING: f64 = 5.0;
-2] = [0.216e-6, 9.6e-6];
 /// Shanks that carry more than this share of the contact conductance are worth a word.
 const BYPASS: f64 = 0.02;
 
@@ -104,7 +103,10 @@ fn preload_cautions(chain: &Chain) -> Vec<Caution> {
 fn resistance_cautions(chain: &Chain, cases: &[CaseResult]) -> Vec<Caution> {
     let mut found = Vec::new();
     let bolts = chain.cones().len();
-    if cases.first().is_some_and(|case| case.resistance_upper.is_none()) {
+    if cases
+        .first()
+        .is_some_and(|case| case.resistance_upper.is_none())
+    {
         let several = if bolts > 1 {
             "each bolt's cell is solved alone and passes no heat to its neighbours"
         } else {
@@ -236,10 +238,10 @@ fn insulates(joint: &Joint) -> bool {
             .is_some_and(|coating| !coating.plating.metal)
     });
     let filler = joint.filler.as_ref().is_some_and(|filler| {
-        catalog::filler(&filler.name).map_or(
-            matches!(filler.kind, FillerKind::Layer { .. }),
-            |record| record.insulates,
-        )
+        catalog::filler(&filler.name)
+            .map_or(matches!(filler.kind, FillerKind::Layer { .. }), |record| {
+                record.insulates
+            })
     });
     film || filler
 }

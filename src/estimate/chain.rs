@@ -10,10 +10,7 @@ use crate::{
     },
     joint::{Engagement, Fastener, Joint, MeasuredKind, Outline, Plate},
     pressure::{self, Cone, Pair},
-    resistance::{
-        Cells, Load, Path, Plan, Site, cells,
-        cells::DEFAULT_RINGS,
-    },
+    resistance::{Cells, Load, Path, Plan, Site, cells, cells::DEFAULT_RINGS},
 };
 
 /// What the joint may cost beyond or below the closed-form field and the cell model, as factors on

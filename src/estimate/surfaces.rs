@@ -47,9 +47,12 @@ pub fn interface(joint: &Joint, case: usize, at: &Realisation) -> Result<Interfa
         law: joint.contact.law,
         gas: match &joint.service.medium {
             Medium::Vacuum => None,
-            Medium::Gas { gas, pressure } => {
-                Some(gas::at(gas, *pressure, temperature, GAS_FACTOR.powf(at.gas)))
-            }
+            Medium::Gas { gas, pressure } => Some(gas::at(
+                gas,
+                *pressure,
+                temperature,
+                GAS_FACTOR.powf(at.gas),
+            )),
         },
         temperature,
         filler: filler.map(|filler| filler.kind.clone()),

@@ -132,10 +132,13 @@ const FIELD: Input = Input {
 /// The inputs that can move this joint, in the order in which force and heat flow.
 pub fn inputs(joint: &Joint) -> Vec<Input> {
     let mut found = Vec::new();
-    let torque = joint.fasteners.iter().filter_map(|group| match &group.tightening {
-        Tightening::Torque(torque) => Some(torque),
-        Tightening::Preload(_) => None,
-    });
+    let torque = joint
+        .fasteners
+        .iter()
+        .filter_map(|group| match &group.tightening {
+            Tightening::Torque(torque) => Some(torque),
+            Tightening::Preload(_) => None,
+        });
     let by_friction = torque.clone().any(|torque| {
         torque.scatter.is_none()
             && match torque.friction {
@@ -147,9 +150,10 @@ pub fn inputs(joint: &Joint) -> Vec<Input> {
         .clone()
         .any(|torque| torque.scatter.is_none() && torque.tolerance > 0.0);
     let by_method = torque.clone().any(|torque| torque.scatter.is_some())
-        || joint.fasteners.iter().any(|group| {
-            matches!(&group.tightening, Tightening::Preload(force) if spread(force))
-        });
+        || joint
+            .fasteners
+            .iter()
+            .any(|group| matches!(&group.tightening, Tightening::Preload(force) if spread(force)));
     if by_friction {
         found.push(FRICTION);
     }
@@ -178,7 +182,11 @@ pub fn inputs(joint: &Joint) -> Vec<Input> {
         found.push(HARDNESS);
         found.push(LAW);
     }
-    if joint.filler.as_ref().is_some_and(|filler| filler.factor > 1.0) {
+    if joint
+        .filler
+        .as_ref()
+        .is_some_and(|filler| filler.factor > 1.0)
+    {
         found.push(FILLER);
     }
     if joint.filler.is_none() && matches!(joint.service.medium, Medium::Gas { .. }) {

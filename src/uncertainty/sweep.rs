@@ -120,9 +120,7 @@ fn required(joint: &Joint) -> Option<(f64, Limit)> {
     match require.kind {
         RequirementKind::Rise => Some((require.limit / joint.service.heat?, require.bound)),
         RequirementKind::Resistance(Plane::SourceToSink) => Some((require.limit, require.bound)),
-        RequirementKind::Conductance(Plane::SourceToSink) => {
-            Some((require.limit.recip(), flipped))
-        }
+        RequirementKind::Conductance(Plane::SourceToSink) => Some((require.limit.recip(), flipped)),
         _ => None,
     }
 }

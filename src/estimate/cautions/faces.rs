@@ -8,7 +8,8 @@ use crate::{
 };
 
 /// Roughness range of the slope rule, m.
-const SLOPE_RULE: [f64; /// Slope factors from here on come from the roughness rule, not from a measurement.
+const SLOPE_RULE: [f64; 2] = [0.216e-6, 9.6e-6];
+/// Slope factors from here on come from the roughness rule, not from a measurement.
 const BY_RULE: f64 = 1.3;
 /// Handbook conductivity serves up to here, K.
 const DATA_TO: f64 = 400.0;

@@ -123,9 +123,11 @@ fn flatness_stated(joint: &Joint) -> Option<String> {
                 if bow > 0.0 { "concave" } else { "convex" },
                 bow.abs() * 1e6
             )),
-            (_, Some(flatness)) if flatness > 0.0 => {
-                Some(format!("{} is flat within {:.0} µm", plate.name, flatness * 1e6))
-            }
+            (_, Some(flatness)) if flatness > 0.0 => Some(format!(
+                "{} is flat within {:.0} µm",
+                plate.name,
+                flatness * 1e6
+            )),
             _ => None,
         })
         .collect();
