@@ -33,7 +33,10 @@ fn metric(diameter: f64, pitch: f64) -> Thread {
 
 fn data(name: &str) -> toml::Table {
     let path = format!("{}/tests/data/{name}", env!("CARGO_MANIFEST_DIR"));
-    fs::read_to_string(path).unwrap().parse().unwrap()
+    fs::read_to_string(path)
+        .expect("the data file is beside the tests")
+        .parse()
+        .expect("the data file is TOML")
 }
 
 fn number(row: &toml::Value, key: &str) -> f64 {
@@ -43,15 +46,20 @@ fn number(row: &toml::Value, key: &str) -> f64 {
 fn float(value: &toml::Value) -> f64 {
     value
         .as_float()
-        .unwrap_or_else(|| value.as_integer().unwrap() as f64)
+        .unwrap_or_else(|| value.as_integer().expect("a number") as f64)
 }
 
 fn numbers(row: &toml::Value, key: &str) -> Vec<f64> {
-    row[key].as_array().unwrap().iter().map(float).collect()
+    row[key]
+        .as_array()
+        .expect("a list")
+        .iter()
+        .map(float)
+        .collect()
 }
 
 fn rows<'a>(table: &'a toml::Table, key: &str) -> &'a [toml::Value] {
-    table[key].as_array().unwrap()
+    table[key].as_array().expect("a list")
 }
 
 #[track_caller]
@@ -70,7 +78,7 @@ fn seated(table: &toml::Table, name: &str) -> (Thread, f64) {
     let row = rows(table, "seat")
         .iter()
         .find(|row| row["thread"].as_str() == Some(name))
-        .unwrap();
+        .expect("every thread of the tables has its seat");
     let seat = Seat {
         inner_radius: number(row, "hole") / 2e3,
         outer_radius: number(row, "bearing") / 2e3,
@@ -148,7 +156,12 @@ fn fine_thread_table_of_vdi_2230_2001() {
     let mut compared = 0;
     for row in rows(&table, "fine") {
         let name = row["thread"].as_str().unwrap();
-        for (index, class) in row["classes"].as_array().unwrap().iter().enumerate() {
+        for (index, class) in row["classes"]
+            .as_array()
+            .expect("a list")
+            .iter()
+            .enumerate()
+        {
             let (thread, _) = seated(&table, name);
             let strength = yield_strength(class.as_str().unwrap(), thread.diameter);
             let load = (number(row, "friction"), strength);
@@ -167,7 +180,12 @@ fn stainless_table_of_vdi_2230_2001() {
     let table = data("preload_tables.toml");
     for row in rows(&table, "stainless") {
         let name = row["thread"].as_str().unwrap();
-        for (index, class) in row["classes"].as_array().unwrap().iter().enumerate() {
+        for (index, class) in row["classes"]
+            .as_array()
+            .expect("a list")
+            .iter()
+            .enumerate()
+        {
             let class = class.as_str().unwrap();
             let load = (number(row, "friction"), yield_strength(class, 0.0));
             let (force, torque) = table_entry(&table, name, load, TorsionRule::Plastic);
@@ -212,7 +230,12 @@ fn old_edition_preloads_follow_k_2() {
     }
     for row in rows(&table, "old_torque") {
         let name = row["thread"].as_str().unwrap();
-        for (index, class) in row["classes"].as_array().unwrap().iter().enumerate() {
+        for (index, class) in row["classes"]
+            .as_array()
+            .expect("a list")
+            .iter()
+            .enumerate()
+        {
             let (thread, _) = seated(&table, name);
             let load = (
                 0.14,
@@ -294,7 +317,7 @@ fn nut_factor_at_friction_0_15_is_about_0_20() {
 fn proof_loads_of_iso_898() {
     let (table, seats) = (data("preload_cases.toml"), data("preload_tables.toml"));
     for row in rows(&table, "proof") {
-        let names = row["threads"].as_array().unwrap();
+        let names = row["threads"].as_array().expect("a list");
         for (name, printed) in names.iter().zip(numbers(row, "force")) {
             let (thread, _) = seated(&seats, name.as_str().unwrap());
             let stress = match row["grade"].as_str().unwrap() {

@@ -48,13 +48,16 @@ fn thread(diameter: f64, pitch: f64, depths: [f64; 2], inch: bool) -> Thread {
 
 fn cases() -> toml::Table {
     let path = concat!(env!("CARGO_MANIFEST_DIR"), "/tests/data/preload_cases.toml");
-    fs::read_to_string(path).unwrap().parse().unwrap()
+    fs::read_to_string(path)
+        .expect("the data file is beside the tests")
+        .parse()
+        .expect("the data file is TOML")
 }
 
 fn float(value: &toml::Value) -> f64 {
     value
         .as_float()
-        .unwrap_or_else(|| value.as_integer().unwrap() as f64)
+        .unwrap_or_else(|| value.as_integer().expect("a number") as f64)
 }
 
 fn number(row: &toml::Value, key: &str) -> f64 {
@@ -62,7 +65,12 @@ fn number(row: &toml::Value, key: &str) -> f64 {
 }
 
 fn numbers(row: &toml::Value, key: &str) -> Vec<f64> {
-    row[key].as_array().unwrap().iter().map(float).collect()
+    row[key]
+        .as_array()
+        .expect("a list")
+        .iter()
+        .map(float)
+        .collect()
 }
 
 #[track_caller]
@@ -79,16 +87,21 @@ fn assert_close(found: f64, expected: f64, tolerance: f64, what: &str) {
 #[test]
 fn frusta_of_shigley_8_22_and_8_24() {
     let table = cases();
-    for row in table["frusta"].as_array().unwrap() {
-        let name = row["name"].as_str().unwrap();
+    for row in table["frusta"].as_array().expect("a list") {
+        let name = row["name"].as_str().expect("a name");
         // The form has no unit of its own: diameters and moduli as printed give stiffness as printed, with
         // mm·GPa = MN/m and in·Mpsi = Mlbf/in.
         let stiffnesses: Vec<f64> = row["frusta"]
             .as_array()
-            .unwrap()
+            .expect("a list")
             .iter()
             .map(|frustum| {
-                let values: Vec<f64> = frustum.as_array().unwrap().iter().map(float).collect();
+                let values: Vec<f64> = frustum
+                    .as_array()
+                    .expect("a list")
+                    .iter()
+                    .map(float)
+                    .collect();
                 let frustum = Frustum {
                     diameter: values[0],
                     thickness: values[1],
@@ -203,7 +216,7 @@ fn clamped(row: &toml::Value) -> Clamped {
         hole_diameter: metres("hole"),
         grip: metres("grip"),
         outer_diameter: metres("outer"),
-        kind: if row["name"].as_str().unwrap().starts_with("tapped") {
+        kind: if row["name"].as_str().expect("a name").starts_with("tapped") {
             ConeKind::Tapped
         } else {
             ConeKind::Through
@@ -231,10 +244,10 @@ fn integrated(body: &Clamped, tangent: f64) -> f64 {
 #[test]
 fn cone_closed_form_equals_the_integral() {
     let table = cases();
-    for row in table["cone"].as_array().unwrap() {
+    for row in table["cone"].as_array().expect("a list") {
         let body = clamped(row);
         let tangent = body.cone_tangent();
-        let name = row["name"].as_str().unwrap();
+        let name = row["name"].as_str().expect("a name");
         // Printed to four digits.
         assert_close(tangent, number(row, "tangent"), 2e-4, name);
         // The midpoint rule on 20 000 steps is good to 1e-6; asked: 1e-4.
@@ -253,7 +266,7 @@ fn cone_closed_form_equals_the_integral() {
 #[test]
 fn equal_layers_are_one_body() {
     let table = cases();
-    for row in table["cone"].as_array().unwrap() {
+    for row in table["cone"].as_array().expect("a list") {
         let body = clamped(row);
         let layer = |share: f64, youngs_modulus: f64| StackLayer {
             thickness: share * body.grip,
