@@ -111,13 +111,11 @@ impl Local {
     /// [`Local::unloaded`], unless measured values or a pad that loses one face make a step.
     pub fn parted(&self, opening: f64) -> f64 {
         let opening = opening.max(0.0);
-        let parallel = match &self.filling {
-            Some(filling) => filling.parted(opening, |gap| self.across(gap)).recip(),
-            None => {
-                let separation = opening + self.gap_separation(0.0);
-                let gap = self.gap.map_or(0.0, |law| law.conductance(separation));
-                gap + self.radiation
-            }
+        let parallel = if let Some(filling) = &self.filling {
+            filling.parted(opening, |gap| self.across(gap)).recip()
+        } else {
+            let separation = opening + self.gap_separation(0.0);
+            self.gap.map_or(0.0, |law| law.conductance(separation)) + self.radiation
         };
         self.behind_film(parallel).min(self.unloaded)
     }
