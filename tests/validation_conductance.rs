@@ -271,7 +271,7 @@ fn gas_parameter_of_air() {
     near(full, found / (2.0 * 1.16 / 0.84) * 2.0, 1e-12);
 }
 
-/// The gap of the aluminium pair at 1 MPa.
+/// The gap of the aluminium pair at 1e6 Pa.
 fn aluminium_gap() -> Gap {
     let roughness = Surfaces::of(&interface(&aluminium()).faces).roughness;
     Gap {
