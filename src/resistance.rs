@@ -5,6 +5,7 @@
 
 pub mod annulus;
 pub mod cells;
+pub mod column;
 pub mod field;
 pub mod network;
 pub mod path;

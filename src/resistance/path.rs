@@ -4,7 +4,7 @@ use crate::{
     joint::{Outline, Sink, Zone},
     resistance::{
         cells::{Cell, Cells},
-        network::{Flow, Inlet, Outlet, Plates},
+        column::{Flow, Inlet, Outlet, Plates},
     },
 };
 
@@ -106,7 +106,10 @@ impl Cells {
         });
         let alike: Vec<usize> = cells.iter().map(|cell| cell.like).collect();
         let perfect = self.whole(cells, &alike, load, |index| {
-            Some(vec![f64::INFINITY; cells[index].rings.patch_area.len()])
+            Some(vec![
+                f64::INFINITY;
+                cells[index].rings.columns.patch_area.len()
+            ])
         });
         let film = self.film_drop();
         let source_to_sink = whole.source - film;
@@ -204,7 +207,12 @@ impl Cells {
         };
         let mut solved: Vec<Option<Flow>> = Vec::with_capacity(cells.len());
         for (index, cell) in cells.iter().enumerate() {
-            let heated = cell.rings.source_area.iter().any(|area| *area > 0.0);
+            let heated = cell
+                .rings
+                .columns
+                .source_area
+                .iter()
+                .any(|area| *area > 0.0);
             let flow = if !heated {
                 // No heat enters here: the cell stays at the coolant's temperature.
                 Some(Flow::default())
@@ -325,10 +333,11 @@ impl Cell {
             Shanks::None => 0.0,
         };
         let mut contact = 0.0;
-        let mut conductance = Vec::with_capacity(self.rings.patch_area.len());
+        let mut conductance = Vec::with_capacity(self.rings.columns.patch_area.len());
         for (ring, share) in self.head_share.iter().enumerate() {
-            let patches = self.rings.first_patch[ring]..self.rings.first_patch[ring + 1];
-            let area: f64 = self.rings.patch_area[patches.clone()].iter().sum();
+            let patches =
+                self.rings.columns.first_patch[ring]..self.rings.columns.first_patch[ring + 1];
+            let area: f64 = self.rings.columns.patch_area[patches.clone()].iter().sum();
             let beside = if *share > 0.0 {
                 shank * share / area
             } else {
@@ -340,7 +349,7 @@ impl Cell {
                 } else {
                     (load.conductance)(self.pressure(patch, load.forces))
                 };
-                contact += self.rings.patch_area[patch] * local;
+                contact += self.rings.columns.patch_area[patch] * local;
                 conductance.push(local + beside);
             }
         }

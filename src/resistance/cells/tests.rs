@@ -183,7 +183,7 @@ fn cells_cover_the_plates() {
         let rings: f64 = cells
             .cells
             .iter()
-            .flat_map(|cell| &cell.rings.plate_area[plate])
+            .flat_map(|cell| &cell.rings.columns.plate_area[plate])
             .sum();
         assert!((rings / cells.plate_area[plate] - 1.0).abs() < 1e-9);
     }
