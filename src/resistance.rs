@@ -9,9 +9,11 @@ pub mod column;
 pub mod field;
 pub mod network;
 pub mod path;
+pub mod plan_grid;
 pub mod region;
 mod rings;
 
 pub use cells::{Cells, Plan, Site, cells};
 pub use field::RingRow;
 pub use path::{Load, Path};
+pub use plan_grid::{PlanGrid, plan_grid};

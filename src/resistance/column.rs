@@ -161,6 +161,13 @@ impl Constants {
     }
 }
 
+impl Coupling {
+    /// What joins the plates here, W/K.
+    pub(super) fn total(&self) -> f64 {
+        self.conductance[0] + self.conductance[1]
+    }
+}
+
 impl Columns {
     pub(super) fn count(&self) -> usize {
         self.source_area.len()

@@ -131,7 +131,7 @@ impl Cells {
             }
             let share: f64 = patches
                 .map(|patch| {
-                    let pressure = cell.pressure(patch, load.forces);
+                    let pressure = cell.patches.pressure(patch, load.forces);
                     cell.rings.columns.patch_area[patch] * (load.conductance)(pressure)
                 })
                 .sum();
@@ -165,7 +165,9 @@ impl Cell {
     /// Force on one ring, N.
     fn ring_force(&self, ring: usize, forces: &[f64]) -> f64 {
         (self.rings.columns.first_patch[ring]..self.rings.columns.first_patch[ring + 1])
-            .map(|patch| self.rings.columns.patch_area[patch] * self.pressure(patch, forces))
+            .map(|patch| {
+                self.rings.columns.patch_area[patch] * self.patches.pressure(patch, forces)
+            })
             .sum()
     }
 }

@@ -28,7 +28,29 @@ impl Patches {
         &self.weights[self.first_weight[patch]..self.first_weight[patch + 1]]
     }
 
-    fn push(&mut self, weights: impl Iterator<Item = (usize, f64)>) {
+    /// Pressure on a patch, Pa.
+    pub(super) fn pressure(&self, patch: usize, forces: &[f64]) -> f64 {
+        self.of(patch)
+            .iter()
+            .map(|(bolt, weight)| forces[*bolt] * weight)
+            .sum()
+    }
+
+    /// Divides the weights by the share of each bolt's force that they carry on patches of the
+    /// given areas.
+    pub(super) fn restore(&mut self, areas: &[f64], bolts: usize) {
+        let mut carried = vec![0.0; bolts];
+        for (patch, area) in areas.iter().enumerate() {
+            for (bolt, weight) in self.of(patch) {
+                carried[*bolt] += area * weight;
+            }
+        }
+        for (bolt, weight) in &mut self.weights {
+            *weight /= carried[*bolt];
+        }
+    }
+
+    pub(super) fn push(&mut self, weights: impl Iterator<Item = (usize, f64)>) {
         self.weights
             .extend(weights.filter(|(_, weight)| *weight > 0.0));
         self.first_weight.push(self.weights.len());
