@@ -313,7 +313,7 @@ impl Cells {
     }
 
     /// One bolt in the middle of two equal discs, heated all over.
-    fn is_round(&self) -> bool {
+    pub fn is_round(&self) -> bool {
         const ROUNDING: f64 = 1e-9;
         let [(first, origin), (second, middle)] = self.plan.outlines;
         let (Outline::Disc { radius }, Outline::Disc { radius: other }) = (first, second) else {

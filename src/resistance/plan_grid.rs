@@ -363,3 +363,6 @@ impl PlanGrid {
         Some(flow)
     }
 }
+
+#[cfg(test)]
+mod tests;
