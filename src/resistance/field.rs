@@ -65,7 +65,7 @@ impl Cells {
         self.cells
             .iter()
             .flat_map(|cell| {
-                let areas = &cell.rings.patch_area;
+                let areas = &cell.rings.columns.patch_area;
                 (0..areas.len())
                     .filter(|patch| !cell.patches.of(*patch).is_empty())
                     .map(|patch| areas[patch])
@@ -123,15 +123,16 @@ impl Cells {
         let mut cumulative = 0.0;
         let mut rows = Vec::new();
         for (ring, pair) in cell.edges.windows(2).enumerate() {
-            let patches = cell.rings.first_patch[ring]..cell.rings.first_patch[ring + 1];
-            let area: f64 = cell.rings.patch_area[patches.clone()].iter().sum();
+            let patches =
+                cell.rings.columns.first_patch[ring]..cell.rings.columns.first_patch[ring + 1];
+            let area: f64 = cell.rings.columns.patch_area[patches.clone()].iter().sum();
             if area <= 0.0 {
                 continue;
             }
             let share: f64 = patches
                 .map(|patch| {
-                    let pressure = cell.pressure(patch, load.forces);
-                    cell.rings.patch_area[patch] * (load.conductance)(pressure)
+                    let pressure = cell.patches.pressure(patch, load.forces);
+                    cell.rings.columns.patch_area[patch] * (load.conductance)(pressure)
                 })
                 .sum();
             cumulative += share;
@@ -163,8 +164,10 @@ impl Cells {
 impl Cell {
     /// Force on one ring, N.
     fn ring_force(&self, ring: usize, forces: &[f64]) -> f64 {
-        (self.rings.first_patch[ring]..self.rings.first_patch[ring + 1])
-            .map(|patch| self.rings.patch_area[patch] * self.pressure(patch, forces))
+        (self.rings.columns.first_patch[ring]..self.rings.columns.first_patch[ring + 1])
+            .map(|patch| {
+                self.rings.columns.patch_area[patch] * self.patches.pressure(patch, forces)
+            })
             .sum()
     }
 }
