@@ -155,7 +155,7 @@ fn a_folder_an_empty_file_and_foreign_bytes_are_faults_of_the_file() {
     write("latin.toml", b"title = \"x\"\nthickness = \"5 \xB5m\"\n");
     write("wide.toml", b"\xFF\xFEt\0i\0");
     for (name, code, word) in [
-        ("folder", "file/unreadable", "folder"),
+        ("folder", "file/not-found", "folder"),
         ("empty.toml", "file/empty", "empty"),
         ("blank.toml", "file/empty", "empty"),
         ("latin.toml", "file/not-utf8", "0xB5 on line 2"),

@@ -1,13 +1,16 @@
 //! The one place where commands meet the chain: reading a joint, estimating it, drawing it.
 
 use crate::{
-    catalog,
+    catalog::{self, Kind},
     cli::console::Trouble,
     diagnostic::{self, Colour, Fault},
     estimate::{Estimate, FieldMap, RingRow, TorqueSweep},
     figures::{self, Drawing, Format},
     joint::Joint,
-    report::listing::Listing,
+    report::{
+        catalogue,
+        listing::{self, Listing},
+    },
     units::{self, Quantity},
 };
 
@@ -88,9 +91,39 @@ pub fn nearest(name: &str, known: &[String]) -> Option<String> {
     diagnostic::nearest(name, known.iter().map(String::as_str))
 }
 
+/// The whole catalogue, in the order of the chain.
 pub fn listings() -> Vec<Listing> {
-    let _: Option<catalog::Material> = None;
-    Vec::new()
+    vec![
+        catalogue::materials(catalog::materials()),
+        catalogue::finishes(catalog::finishes()),
+        catalogue::platings(catalog::platings()),
+        catalogue::threads(catalog::threads()),
+        catalogue::holes(catalog::clearance_holes()),
+        catalogue::heads(catalog::seats()),
+        catalogue::grades(catalog::grades()),
+        catalogue::friction(catalog::friction()),
+        catalogue::methods(catalog::methods()),
+        catalogue::gases(catalog::gases()),
+        catalogue::fillers(catalog::fillers()),
+    ]
+}
+
+/// Everything known about one record, where its kind has records of one name each.
+pub fn card((kind, name): (&str, &str)) -> Option<String> {
+    let kind = match kind {
+        "materials" => Kind::Materials,
+        "finishes" => Kind::Finishes,
+        "platings" => Kind::Platings,
+        "threads" => Kind::Threads,
+        "friction" => Kind::Friction,
+        "methods" => Kind::Tightening,
+        "gases" => Kind::Gases,
+        "fillers" => Kind::Fillers,
+        _ => return None,
+    };
+    let table = catalog::table(kind);
+    let row = table.rows.iter().find(|row| row[0] == name)?;
+    Some(listing::card(&table.columns, row))
 }
 
 /// A drawing as a file of the format.

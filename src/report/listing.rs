@@ -4,8 +4,9 @@ use crate::{
     diagnostic::Fault,
     report::{
         json::FORMAT,
-        number::plain,
+        number::{plain, wrapped},
         table::{Side, aligned},
+        text::WIDTH,
     },
 };
 use serde_json::{Value, json};
@@ -26,7 +27,7 @@ pub struct Listing {
 pub struct Item {
     /// Cells in the order of the headings.
     pub cells: Vec<String>,
-    /// Words a filter also looks at: aliases, notes, standards.
+    /// Names a filter also looks at, with `|` between them, so that no match runs across two.
     pub keywords: String,
     /// The whole record in SI.
     pub record: Value,
@@ -35,7 +36,8 @@ pub struct Item {
 impl Item {
     /// Whether every word occurs in this record; case, spaces and dashes do not matter.
     pub fn answers(&self, words: &[String]) -> bool {
-        let hay = folded(&format!("{} {}", self.cells.join(" "), self.keywords));
+        // No match may run from one cell into the next.
+        let hay = folded(&format!("{}|{}", self.cells.join("|"), self.keywords));
         words.iter().all(|word| hay.contains(&folded(word)))
     }
 }
@@ -53,7 +55,7 @@ pub fn text(listing: &Listing) -> String {
     let rows: Vec<Vec<String>> = listing
         .items
         .iter()
-        .map(|item| item.cells.iter().map(|cell| plain(cell)).collect())
+        .map(|item| item.cells.iter().map(|cell| lines(cell)).collect())
         .collect();
     let starred = rows.iter().flatten().any(|cell| cell.ends_with('*'));
     format!(
@@ -67,6 +69,33 @@ pub fn text(listing: &Listing) -> String {
             ""
         }
     )
+}
+
+/// A cell keeps its own line breaks.
+fn lines(cell: &str) -> String {
+    let lines: Vec<String> = cell.lines().map(plain).collect();
+    lines.join("\n")
+}
+
+/// One record with everything known about it, a line to each heading that has a value.
+pub fn card(headings: &[&str], row: &[String]) -> String {
+    let label = headings
+        .iter()
+        .map(|each| each.chars().count())
+        .max()
+        .unwrap_or(0)
+        + 2;
+    let mut text = String::new();
+    for (heading, value) in headings.iter().zip(row) {
+        if value.is_empty() || value == "–" {
+            continue;
+        }
+        let gap = " ".repeat(label - heading.chars().count());
+        let body = wrapped(&plain(value), WIDTH - label, 0)
+            .replace('\n', &format!("\n{}", " ".repeat(label)));
+        text.extend([heading, gap.as_str(), body.as_str(), "\n"]);
+    }
+    text
 }
 
 /// The listings as one JSON object, records by kind.
@@ -136,11 +165,12 @@ mod tests {
     fn a_filter_ignores_case_spaces_and_dashes() {
         let item = Item {
             cells: vec!["Al 6061-T6".to_owned()],
-            keywords: "EN AW-6061 T6".to_owned(),
+            keywords: "EN AW-6061 T6|6061".to_owned(),
             record: Value::Null,
         };
         assert!(item.answers(&["al6061 t6".to_owned()]));
         assert!(item.answers(&["AL".to_owned(), "aw".to_owned()]));
         assert!(!item.answers(&["AL".to_owned(), "7075".to_owned()]));
+        assert!(!item.answers(&["T6 6061".to_owned()]), "across two names");
     }
 }

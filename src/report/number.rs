@@ -31,6 +31,16 @@ pub fn four(value: f64) -> String {
     }
 }
 
+/// At most four significant digits without the zeros that follow: for values given in round numbers.
+pub fn brief(value: f64) -> String {
+    let text = four(value);
+    if text.contains('.') && !text.contains('e') {
+        text.trim_end_matches('0').trim_end_matches('.').to_owned()
+    } else {
+        text
+    }
+}
+
 /// Four significant digits, or a dash where there is no value.
 pub fn optional(value: Option<f64>) -> String {
     value.map_or_else(|| "–".to_owned(), four)
@@ -127,6 +137,18 @@ mod tests {
             (f64::INFINITY, "–"),
         ] {
             assert_eq!(four(value), shown, "{value}");
+        }
+    }
+
+    #[test]
+    fn round_values_print_without_zeros() {
+        for (value, shown) in [
+            (167.0, "167"),
+            (0.2, "0.2"),
+            (1200.0, "1200"),
+            (2.54, "2.54"),
+        ] {
+            assert_eq!(brief(value), shown);
         }
     }
 
