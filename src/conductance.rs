@@ -1,1 +1,19 @@
 //! Contact pressure to local conductance.
+//!
+//! An [`Interface`] is what stands between two faces; [`Interface::prepare`] works out everything
+//! that does not depend on pressure, and the [`Local`] it returns answers for one pressure at a
+//! time.
+
+pub mod filler;
+pub mod film;
+pub mod flatness;
+pub mod gas;
+mod interface;
+mod local;
+pub mod radiation;
+pub mod spots;
+
+pub use gas::GapGas;
+pub use interface::{Face, Hardness, Interface, Layer};
+pub use local::{Conductance, Local};
+pub use spots::slope_from_roughness;

@@ -1,251 +1,221 @@
-//! The whole chain on one page.
+//! The whole chain on one page: a joint, torque first, resistance last.
+
+mod cautions;
+mod chain;
+mod forces;
+mod maps;
+mod results;
+mod surfaces;
+
+pub use cautions::sweep_cautions;
+pub use chain::{Chain, State};
+pub use forces::Strength;
+pub use maps::{field_map, ring_tables};
+pub use results::*;
+
+pub use crate::resistance::RingRow;
 
 use crate::{
-    diagnostic::{Assumption, Caution},
-    joint::{RequirementKind, Limit},
+    joint::{Fastener, Joint, Sink, Zone},
+    resistance::Path,
 };
 
-/// Low, nominal and high of one number; low and high are absent when no draws were made.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Band {
-    /// 5 % quantile, or the unfavourable corner for forces.
-    pub low: Option<f64>,
-    /// The chain at nominal inputs.
-    pub nominal: f64,
-    /// 95 % quantile, or the favourable corner for forces.
-    pub high: Option<f64>,
-}
-
-/// One of the four results between its planes, K/W; conductance is its inverse.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct PlaneResult {
-    /// Resistance, K/W.
-    pub resistance: Band,
-}
-
-/// The five results of one thermal case.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Results {
-    /// The faying faces alone: ring sum.
-    pub contact: PlaneResult,
-    /// Mean of the first plate to mean of the last.
-    pub node_to_node: PlaneResult,
-    /// What the joint adds to the same path with perfect contact.
-    pub added_by_joint: PlaneResult,
-    /// Heated zone to sink surface.
-    pub source_to_sink: PlaneResult,
-    /// The same path with no joint resistance.
-    pub perfect_contact: PlaneResult,
-}
-
-/// One bolt.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct BoltResult {
-    /// Place in joint coordinates, m.
-    pub at: [f64; 2],
-    /// Clamp force at assembly, N.
-    pub force: Band,
-    /// Clamp force after losses, N.
-    pub force_in_service: Band,
-    /// Equivalent stress over yield: nominal and at the highest force; none without a yield strength.
-    pub strength_use: Option<[f64; 2]>,
-    /// Largest torque that passes every limit, N m; none when the preload is given.
-    pub largest_torque: Option<f64>,
-    /// Radius where contact ends, m.
-    pub contact_radius: f64,
-    /// Ring sum of this bolt at nominal, W/K.
-    pub contact_conductance: f64,
-}
-
-/// The pressure between the faces at nominal force.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct PressureResult {
-    /// Highest pressure, Pa.
-    pub peak: f64,
-    /// Area in contact, m².
-    pub contact_area: f64,
-    /// Distance from the nearest bolt axis that holds 95 % of the force, m.
-    pub radius_95: f64,
-    /// Force carried, N.
-    pub force: f64,
-    /// Widest gap, m; the cone knows none.
-    pub gap_max: Option<f64>,
-    /// Mean gap, m; the cone knows none.
-    pub gap_mean: Option<f64>,
-}
-
-/// Temperature rises above the mean sink surface, K.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Rise {
-    /// Mean of the source.
-    pub source: Band,
-    /// Hottest point of the first plate, nominal.
-    pub hottest: f64,
-    /// Mean drop across the interface, nominal.
-    pub interface_drop: f64,
-    /// Film drop from the sink surface to the coolant, where there is a film.
-    pub coolant_drop: Option<f64>,
-}
-
-/// Whether a requirement is met.
+/// How many draws, from which seed.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
-pub enum Met {
-    /// Also at the unfavourable quantile.
-    Yes,
-    /// Not even at nominal.
-    No,
-    /// At nominal, but not at the unfavourable quantile, or no band was computed.
-    Uncertain,
-}
-
-/// A requirement and how the joint stands to it.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct RequirementResult {
-    /// The limited quantity.
-    pub kind: RequirementKind,
-    /// The limit, K, K/W or W/K.
-    pub limit: f64,
-    /// Side of the limit.
-    pub bound: Limit,
-    /// The value that is compared, unfavourable quantile where there is one.
-    pub value: f64,
-    /// The verdict.
-    pub met: Met,
-}
-
-/// One thermal case: a sink temperature and everything that follows from it.
-#[derive(Clone, Debug, PartialEq)]
-pub struct CaseResult {
-    /// `service`, `hot` or `cold`.
-    pub name: &'static str,
-    /// Mean sink surface temperature, K.
-    pub sink_temperature: f64,
-    /// Every bolt in file order.
-    pub bolts: Vec<BoltResult>,
-    /// The pressure field.
-    pub pressure: PressureResult,
-    /// The results.
-    pub results: Results,
-    /// Proved lower bound of source to sink for the field used, K/W.
-    pub resistance_lower: Option<f64>,
-    /// Proved upper bound of source to sink for the field used, K/W; single round joints only.
-    pub resistance_upper: Option<f64>,
-    /// Ring discretisation error, relative to source to sink.
-    pub numerical_error: f64,
-    /// Area of the faying faces, m².
-    pub footprint: f64,
-    /// Temperature rises, when heat is stated.
-    pub rise: Option<Rise>,
-    /// The requirement, when stated.
-    pub requirement: Option<RequirementResult>,
-    /// Share of the variance of the source-to-sink resistance by input, largest first; empty without draws.
-    pub drivers: Vec<Driver>,
-}
-
-/// One input and its share of the spread.
-#[derive(Clone, Debug, PartialEq)]
-pub struct Driver {
-    /// The input.
-    pub input: &'static str,
-    /// Share of the variance, 0 to 1.
-    pub share: f64,
-    /// What the engineer can do about it.
-    pub remedy: &'static str,
-}
-
-/// Everything `estimate` found, upstream first.
-#[derive(Clone, Debug, PartialEq)]
-pub struct Estimate {
-    /// Title of the joint.
-    pub title: String,
+pub struct Options {
+    /// Number of draws; none gives nominal results without a band.
+    pub draws: u32,
     /// Seed of the draws.
     pub seed: u64,
-    /// Number of draws; 0 means nominal only.
-    pub draws: u32,
-    /// The field: `cone`.
-    pub field: &'static str,
-    /// The resolution: `normal`.
-    pub resolution: &'static str,
-    /// Name of the source plane.
-    pub source_plane: String,
-    /// Name of the sink plane.
-    pub sink_plane: String,
-    /// Heat through the joint, W.
-    pub heat: Option<f64>,
-    /// The cases; the first is the one the headline speaks of.
-    pub cases: Vec<CaseResult>,
-    /// Cautions, most grave first.
-    pub cautions: Vec<Caution>,
-    /// What the file did not state.
-    pub assumptions: Vec<Assumption>,
 }
 
-/// One torque of a sweep.
-#[derive(Clone, Debug, PartialEq)]
-pub struct TorquePoint {
-    /// Torque at the wrench, N m.
-    pub torque: f64,
-    /// Clamp force at assembly, N.
-    pub force: Band,
-    /// Source to sink, K/W.
-    pub source_to_sink: Band,
-    /// Contact only, K/W.
-    pub contact: Band,
-    /// What the joint adds, K/W.
-    pub added_by_joint: Band,
-    /// Equivalent stress over yield: nominal and at the highest force.
-    pub strength_use: Option<[f64; 2]>,
-    /// Whether every strength limit holds at this torque.
-    pub passes: bool,
+/// Where every uncertain input of one realisation lies; all zero is the nominal chain.
+///
+/// Inputs with bounds lie at a place from −1 (low) to +1 (high); inputs with a factor lie at a
+/// number of standard deviations.
+#[derive(Clone, Copy, Debug, Default, PartialEq)]
+pub struct Realisation {
+    /// Friction of all bolts, place.
+    pub friction: f64,
+    /// Torque tool, place.
+    pub tool: f64,
+    /// Given preload or scatter of the method, place.
+    pub preload: f64,
+    /// Share of the guide losses that acts when the file asks for none, 0 to 1.
+    pub loss: f64,
+    /// Roughness of the warm and the cold face, place.
+    pub roughness: [f64; 2],
+    /// Slope of the warm and the cold face, standard deviations.
+    pub slope: [f64; 2],
+    /// Hardness of both faces, place.
+    pub hardness: f64,
+    /// Conductivity of the warm and the cold plate, place.
+    pub conductivity: [f64; 2],
+    /// Law of the solid spots or own measurements, standard deviations.
+    pub law: f64,
+    /// Filler resistance, standard deviations.
+    pub filler: f64,
+    /// Gas parameter, standard deviations.
+    pub gas: f64,
+    /// Form of the pressure field and of the spreading model, place.
+    pub field: f64,
 }
 
-/// Resistance against the torque of one fastener group, the others as stated.
-#[derive(Clone, Debug, PartialEq)]
-pub struct TorqueSweep {
-    /// Title of the joint.
-    pub title: String,
-    /// Group that is varied, for people: `M4 socket, 6 places`.
-    pub group: String,
-    /// Torque stated in the file, N m.
-    pub stated: f64,
-    /// Largest torque that passes every limit, N m, and the limit that ends it.
-    pub largest: Option<(f64, &'static str)>,
-    /// Torque of the lowest source-to-sink resistance within the sweep, N m.
-    pub best: f64,
-    /// Points, torque rising.
-    pub points: Vec<TorquePoint>,
-    /// Requirement in K/W of source to sink, where one can be put so.
-    pub required: Option<(f64, Limit)>,
-    /// Cautions.
-    pub cautions: Vec<Caution>,
+/// Why a chain gave no number.
+#[derive(Clone, Debug, PartialEq, thiserror::Error)]
+pub enum Failure {
+    /// A property is not known at the temperature of a case.
+    #[error("{0}")]
+    Cold(String),
+    /// A face has no hardness and no other law is given.
+    #[error(
+        "plate `{0}` has no hardness, so its bare contact cannot be computed; give `hardness`, a filler or measured points"
+    )]
+    NoHardness(String),
+    /// The heated zone or a cell carries nothing.
+    #[error(
+        "the conduction network of case `{case}` did not give a number ({reading}); check the file with `ringsum check`"
+    )]
+    NotFinite {
+        /// Name of the case.
+        case: &'static str,
+        /// What was not finite.
+        reading: String,
+    },
+    /// No clamp force is left.
+    #[error(
+        "no clamp force is left in service at {bolts} of {of} bolts in case `{case}`, so the joint is open there; raise the preload, lengthen the grip or match the expansion"
+    )]
+    Open {
+        /// Bolts without force.
+        bolts: usize,
+        /// All bolts.
+        of: usize,
+        /// Name of the case.
+        case: &'static str,
+    },
+    /// A sweep asks for a group that is not there.
+    #[error("there is no fastener group {asked}; the joint has {known}")]
+    NoSuchGroup {
+        /// Number asked for, from 1.
+        asked: usize,
+        /// Number of groups.
+        known: usize,
+    },
+    /// A sweep of torque over a group whose preload is given.
+    #[error(
+        "fastener group {group} states its preload, not a torque; give `torque` and `friction` to sweep it"
+    )]
+    NotByTorque {
+        /// Number of the group, from 1.
+        group: usize,
+    },
+    /// A sweep without a range.
+    #[error(
+        "torque cannot be swept from {from} to {to} N·m; it must rise from above zero in at least two steps"
+    )]
+    SweepRange {
+        /// Lowest torque, N m.
+        from: f64,
+        /// Highest torque, N m.
+        to: f64,
+    },
 }
 
-/// The plan of the joint and its fields at nominal, for drawings.
-#[derive(Clone, Debug, PartialEq)]
-pub struct FieldMap {
-    /// Left, lower, right and upper edge of the window, m.
-    pub window: [f64; 4],
-    /// Columns and rows.
-    pub size: [usize; 2],
-    /// Pressure at cell centres, row by row from below, Pa; NaN off the faying faces.
-    pub pressure: Vec<f64>,
-    /// Local conductance, W/(m² K), likewise.
-    pub conductance: Vec<f64>,
+/// The chain at nominal inputs: every result without a band.
+pub fn nominal(chain: &Chain, options: &Options) -> Result<Estimate, Failure> {
+    let joint = chain.joint();
+    let cases = (0..joint.service.cases.len())
+        .map(|case| case_result(chain, case))
+        .collect::<Result<Vec<CaseResult>, Failure>>()?;
+    let (source_plane, sink_plane) = planes(joint);
+    Ok(Estimate {
+        title: joint.title.clone(),
+        seed: options.seed,
+        draws: options.draws,
+        field: "cone",
+        resolution: "normal",
+        source_plane,
+        sink_plane,
+        heat: joint.service.heat,
+        cautions: cautions::gathered(chain, &cases),
+        cases,
+        assumptions: joint.assumptions.clone(),
+    })
 }
 
-/// One ring around one bolt.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct RingRow {
-    /// Inner and outer radius, m.
-    pub radius: [f64; 2],
-    /// Area inside the bolt's own cell, m².
-    pub area: f64,
-    /// Mean pressure, Pa.
-    pub pressure: f64,
-    /// Local conductance, W/(m² K).
-    pub conductance: f64,
-    /// Conductance of the ring, W/K.
-    pub share: f64,
-    /// Sum from the hole to this ring, W/K.
-    pub cumulative: f64,
+/// One thermal case, upstream first: force, pressure, conductance, resistance, temperature.
+fn case_result(chain: &Chain, case: usize) -> Result<CaseResult, Failure> {
+    let joint = chain.joint();
+    let named = &joint.service.cases[case];
+    let state = chain.state(case, &Realisation::default())?;
+    let open = state.forces.iter().filter(|force| **force <= 0.0).count();
+    if open > 0 {
+        return Err(Failure::Open {
+            bolts: open,
+            of: state.forces.len(),
+            case: named.name,
+        });
+    }
+    let bolts = chain.bolts(case, &state);
+    let pressure = chain.pressure(&state);
+    let path = &state.path;
+    Ok(CaseResult {
+        name: named.name,
+        sink_temperature: named.temperature,
+        bolts,
+        pressure,
+        results: results(path),
+        resistance_lower: Some(path.resistance_lower),
+        resistance_upper: path.resistance_upper,
+        numerical_error: chain.ring_error(&state),
+        footprint: chain.footprint(),
+        rise: joint.service.heat.map(|heat| Rise {
+            source: Band::nominal(heat * path.source_to_sink),
+            hottest: Band::nominal(heat * path.hottest),
+            interface_drop: Band::nominal(heat * path.interface_drop),
+            coolant_drop: path.coolant_drop.map(|drop| heat * drop),
+        }),
+        requirement: None,
+        drivers: Vec::new(),
+    })
+}
+
+fn results(path: &Path) -> Results {
+    let plane = |resistance: f64| PlaneResult {
+        resistance: Band::nominal(resistance),
+    };
+    Results {
+        contact: plane(path.contact.recip()),
+        node_to_node: plane(path.node_to_node),
+        added_by_joint: plane(path.added_by_joint),
+        source_to_sink: plane(path.source_to_sink),
+        perfect_contact: plane(path.perfect_contact),
+    }
+}
+
+/// Names of the planes between which source to sink stands.
+fn planes(joint: &Joint) -> (String, String) {
+    let warm = &joint.warm().name;
+    let cold = &joint.cold().name;
+    let source = match joint.source.zone {
+        Zone::Face => format!("outer face of {warm}, mean"),
+        Zone::Rectangle { .. } | Zone::Disc { .. } => format!("heated zone on {warm}, mean"),
+    };
+    let sink = match joint.sink {
+        Sink::IsothermalBack => format!("back of {cold}, one temperature"),
+        Sink::Film(_) => format!("back of {cold}, mean surface"),
+        Sink::Rim => format!("rim of {cold}, one temperature"),
+    };
+    (source, sink)
+}
+
+/// A fastener group for people: `M5 A2-70, 6 places`.
+pub fn group_label(group: &Fastener) -> String {
+    let count = group.places.len();
+    let places = if count == 1 { "place" } else { "places" };
+    format!(
+        "{} {}, {count} {places}",
+        group.thread.name, group.grade.name
+    )
 }

@@ -1,5 +1,223 @@
 //! The joint file, and the checked joint it describes.
+//!
+//! Text becomes a tree with places, overrides change the tree, one description of the fields
+//! reads it into SI values, and the parts below turn these into a checked [`Joint`]. Every fault
+//! is told at once, in file order.
 
 pub mod checked;
+pub mod fields;
+pub mod sections;
+
+mod cold;
+mod collector;
+mod contact;
+mod fasteners;
+mod filler;
+mod finishes;
+mod geometry;
+mod materials;
+mod overrides;
+mod patterns;
+mod plates;
+mod record;
+mod schema;
+mod seats;
+mod service;
+mod syntax;
+mod tightening;
+mod tree;
+mod walk;
+
+use toml::de::DeTable;
+
+use crate::{
+    diagnostic::{self, Colour, Fault},
+    joint::{
+        collector::{Collector, Wording, fault},
+        record::Record,
+        sections::{FILE, FORMAT},
+        tree::Node,
+    },
+};
 
 pub use checked::*;
+pub use finishes::slope_from_roughness;
+pub use schema::schema;
+
+/// Longest joint file, bytes.
+pub const LONGEST_FILE: usize = 10_000_000;
+
+/// Most bolts of a joint, and most entries of any list.
+pub const MOST_PLACES: usize = 10_000;
+
+/// Every fault of one reading, with the texts they stand in.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Faults {
+    /// Name and text: the file first, its name left empty for the caller, then each override.
+    pub sources: Vec<(String, String)>,
+    /// Faults in file order, each with the index of its text.
+    pub faults: Vec<(usize, Fault)>,
+}
+
+impl Faults {
+    /// All faults as text; `path` names the file.
+    pub fn shown(&self, path: &str, colour: Colour) -> String {
+        let shown = self.faults.iter().map(|(source, fault)| {
+            let (name, text) = &self.sources[*source];
+            let name = if name.is_empty() { path } else { name };
+            diagnostic::shown(fault, name, text, colour)
+        });
+        shown.collect::<Vec<String>>().join("\n")
+    }
+}
+
+/// Reads a joint file; on failure returns every fault found, in file order.
+pub fn read(text: &str) -> Result<Joint, Vec<Fault>> {
+    read_with(text, &[]).map_err(|all| all.faults.into_iter().map(|(_, fault)| fault).collect())
+}
+
+/// Reads a joint file with overrides such as `plate.upper.thickness="6 mm"`, which act before
+/// anything is checked. Faults in an override point to the override.
+pub fn read_with(text: &str, sets: &[String]) -> Result<Joint, Faults> {
+    let (joint, faults) = reading(text, sets);
+    match joint {
+        Some(joint) if faults.is_empty() => Ok(joint),
+        _ => Err(placed(text, sets, faults)),
+    }
+}
+
+/// Spans count through the file and then through the overrides, each after a line break; here
+/// they are given back to their own texts.
+fn placed(text: &str, sets: &[String], faults: Vec<Fault>) -> Faults {
+    let mut sources = vec![(String::new(), text.to_owned())];
+    let mut starts = vec![0];
+    let mut start = text.len() + 1;
+    for set in sets {
+        sources.push((format!("--set {set}"), set.clone()));
+        starts.push(start);
+        start += set.len() + 1;
+    }
+    let faults = faults.into_iter().map(|mut fault| {
+        let source = starts.partition_point(|start| *start <= fault.span.start) - 1;
+        let (start, length) = (starts[source], sources[source].1.len());
+        let inside = |at: usize| at.saturating_sub(start).min(length);
+        fault.span = inside(fault.span.start)..inside(fault.span.end);
+        (source, fault)
+    });
+    Faults {
+        faults: faults.collect(),
+        sources,
+    }
+}
+
+fn reading(text: &str, sets: &[String]) -> (Option<Joint>, Vec<Fault>) {
+    if text.len() > LONGEST_FILE {
+        let told = fault(
+            "file/too-large",
+            &(0..0),
+            format!("the file has {} bytes", text.len()),
+        )
+        .expecting(format!("expected at most {LONGEST_FILE} bytes"));
+        return (None, vec![told]);
+    }
+    if text
+        .trim_matches(|c: char| c.is_whitespace() || c == '\u{feff}')
+        .is_empty()
+    {
+        let told = fault("file/empty", &(0..0), "the file is empty")
+            .expecting("expected a joint")
+            .help("`ringsum new` writes one to start from");
+        return (None, vec![told]);
+    }
+    let (table, errors) = DeTable::parse_recoverable(text);
+    let syntax = syntax::faults(&errors, text);
+    let mut collector = Collector::default();
+    let mut tree = Node::file(&table);
+    let mut start = text.len() + 1;
+    for set in sets {
+        overrides::apply(&mut tree, set, start, &mut collector);
+        start += set.len() + 1;
+    }
+    let overridden = collector.count() == 0;
+    let file = walk::file(&tree, &FILE, &mut collector);
+    if let Some(told) = newer_format(&file) {
+        return (None, vec![told]);
+    }
+    if !syntax.is_empty() {
+        let echoes = collector.into_parts().0;
+        let mut faults = syntax::without_echoes(echoes, &syntax, text);
+        faults.extend(syntax);
+        faults.sort_by_key(|fault| fault.span.start);
+        return (None, faults);
+    }
+    let joint = if overridden {
+        assembled(&file, &mut collector)
+    } else {
+        None
+    };
+    let (faults, assumptions) = collector.into_parts();
+    let joint = joint.map(|joint| Joint {
+        assumptions,
+        ..joint
+    });
+    (joint, faults)
+}
+
+fn newer_format(file: &Record) -> Option<Fault> {
+    let format = *file.counts("format")?.first()?;
+    (format > FORMAT).then(|| {
+        fault(
+            "file/format",
+            &file.span("format"),
+            format!("this file is of format {format}"),
+        )
+        .expecting(format!("this version reads format {FORMAT}"))
+        .help(format!(
+            "a newer ringsum reads it; this one is {}",
+            env!("CARGO_PKG_VERSION")
+        ))
+    })
+}
+
+/// The joint, in the order of the file's parts; none when a part is faulty.
+fn assembled(file: &Record, collector: &mut Collector) -> Option<Joint> {
+    let own = materials::own(file, collector);
+    let plates = plates::read(file, &own, collector);
+    let cooled = plates
+        .as_ref()
+        .and_then(|[_, lower]| lower.record.record("cooled"));
+    let service = service::read(file, cooled, collector);
+    let temperature = service
+        .as_ref()
+        .and_then(|service| service.cases.first())
+        .map(|case| case.temperature);
+    let filler = filler::read(file, collector);
+    let measured = filler::measured(file, temperature, collector);
+    let plates = plates?;
+    let source = plates::source(&plates[0], collector);
+    let sink = plates::sink(&plates[1], collector);
+    let contact = contact::read(file, &plates, collector);
+    let groups = fasteners::read(file, &plates, collector);
+    let fasteners: Option<Vec<Fastener>> =
+        groups.map(|groups| groups.into_iter().map(|group| group.fastener).collect());
+    let losses = contact::losses(file, &plates, fasteners.as_deref(), collector);
+    let plates: Option<Vec<Plate>> = plates
+        .into_iter()
+        .map(plates::PlateDraft::finished)
+        .collect();
+    let joint = Joint {
+        title: file.text("title").unwrap_or("Bolted joint").to_owned(),
+        service: service?,
+        plates: plates?,
+        source: source?,
+        sink: sink?,
+        fasteners: fasteners?,
+        contact: contact?,
+        filler: filler?,
+        measured: measured?,
+        losses: losses?,
+        assumptions: Vec::new(),
+    };
+    cold::check(&joint, file, collector);
+    Some(joint)
+}

@@ -1,1 +1,9 @@
 //! Mathematics that knows no physics.
+
+pub mod banded;
+pub mod block_tridiagonal;
+pub mod interpolation;
+pub mod quadrature;
+pub mod roots;
+pub mod sampling;
+pub mod special;

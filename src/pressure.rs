@@ -1,1 +1,6 @@
 //! Clamp force to contact pressure.
+
+mod beta;
+pub mod cone;
+
+pub use cone::{Cone, Pair, Profile, cone};

@@ -64,8 +64,8 @@ fn case(name: &'static str, sink_temperature: f64) -> CaseResult {
         footprint: 0.0192,
         rise: Some(Rise {
             source: band(4.4, 5.5, 8.8),
-            hottest: 6.1,
-            interface_drop: 2.9,
+            hottest: Band::nominal(6.1),
+            interface_drop: Band::nominal(2.9),
             coolant_drop: Some(0.75),
         }),
         requirement: Some(RequirementResult {

@@ -149,8 +149,9 @@ fn rise(case: &CaseResult) -> Value {
             "low": rise.source.low,
             "nominal": rise.source.nominal,
             "high": rise.source.high,
-            "hottest": rise.hottest,
-            "interface_drop": rise.interface_drop,
+            "hottest": rise.hottest.nominal,
+            "hottest_band": band(&rise.hottest),
+            "interface_drop": band(&rise.interface_drop),
             "coolant_drop": rise.coolant_drop,
         })
     })

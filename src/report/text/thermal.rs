@@ -117,8 +117,8 @@ pub fn verdict(estimate: &Estimate, case: &CaseResult) -> String {
             "rise above the sink surface at {} W: {} K; hottest point {} K; across the faces {} K",
             optional(estimate.heat),
             spread(&rise.source, 1.0).replace("  ", " "),
-            four(rise.hottest),
-            four(rise.interface_drop),
+            four(rise.hottest.nominal),
+            four(rise.interface_drop.nominal),
         );
         if let Some(drop) = rise.coolant_drop {
             let _ = write!(text, "; sink surface to coolant {} K", four(drop));

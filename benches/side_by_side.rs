@@ -1,0 +1,202 @@
+//! The ring sum beside its NumPy peer: 10 000 forces on one joint, both in one run.
+//!
+//! `benches/peer/run` makes the Python environment and starts this; without it only our side runs.
+//! Both sides build the pressure of every ring anew for every force, from radius and cone.
+
+use std::{
+    hint::black_box,
+    io::Write,
+    process::{Command, Stdio},
+    time::Instant,
+};
+
+use rayon::prelude::*;
+use ringsum::{
+    conductance::{
+        Interface, Local,
+        spots::{Asperities, Surfaces},
+    },
+    estimate::{Chain, Realisation},
+    joint::{self, Joint, Law},
+    pressure::{Cone, Profile},
+};
+use serde_json::json;
+
+const EVALUATIONS: usize = 10_000;
+const RUNS: usize = 15;
+
+/// Rings of one bolt: radius and area of each.
+struct Rings {
+    radius: Vec<f64>,
+    area: Vec<f64>,
+}
+
+fn main() {
+    let joint = joint::read(include_str!("../joints/converter_box.toml")).expect("a good joint");
+    let chain = Chain::new(&joint).expect("a chain");
+    let state = chain.state(0, &Realisation::default()).expect("a state");
+    let cone = chain.cones()[0];
+    let rings = rings(&chain, &state, &cone);
+    let forces: Vec<f64> = (0..EVALUATIONS)
+        .map(|index| 1000.0 + 5000.0 * index as f64 / EVALUATIONS as f64)
+        .collect();
+
+    let sum = |force: f64| ring_sum(&rings, &cone, &state.faces.local, force);
+    let alone = timed(|| forces.iter().map(|force| sum(*force)).collect());
+    let pair = rayon::ThreadPoolBuilder::new()
+        .num_threads(2)
+        .build()
+        .expect("two threads");
+    let both = timed(|| pair.install(|| forces.par_iter().map(|force| sum(*force)).collect()));
+    println!(
+        "{EVALUATIONS} ring sums of {} rings, median of {RUNS} runs",
+        rings.radius.len()
+    );
+    println!("  ringsum, one thread   {:8.2} ms", alone.1 * 1e3);
+    println!("  ringsum, two threads  {:8.2} ms", both.1 * 1e3);
+    let Ok(python) = std::env::var("RINGSUM_PEER_PYTHON") else {
+        println!("  NumPy: run benches/peer/run to time the peer in the same run");
+        return;
+    };
+    let law = law(&joint, &state.faces.local);
+    let peer = peer(
+        &python,
+        &json!({
+            "runs": RUNS,
+            "forces": forces,
+            "rings": { "radius": rings.radius, "area": rings.area, "cone": cone_of(&cone) },
+            "law": law,
+        }),
+    );
+    println!("  NumPy, one thread     {:8.2} ms", peer.2 * 1e3);
+    println!(
+        "  NumPy over ringsum    {:8.2} on one, {:.2} on two threads",
+        peer.2 / alone.1,
+        peer.2 / both.1
+    );
+    for (ours, theirs) in [(alone.0[0], peer.0), (alone.0[EVALUATIONS - 1], peer.1)] {
+        // Same formulas in another order of rounding.
+        assert!(
+            (ours / theirs - 1.0).abs() < 1e-9,
+            "{ours} W/K against {theirs} W/K"
+        );
+    }
+}
+
+fn ring_sum(rings: &Rings, cone: &Cone, local: &Local, force: f64) -> f64 {
+    rings
+        .radius
+        .iter()
+        .zip(&rings.area)
+        .map(|(radius, area)| area * local.total(cone.pressure(*radius, force)))
+        .sum()
+}
+
+/// The rings in contact of the first bolt, by their middle radius.
+fn rings(chain: &Chain, state: &ringsum::estimate::State, cone: &Cone) -> Rings {
+    let load = ringsum::resistance::Load {
+        conductance: |pressure: f64| state.faces.conductance(pressure),
+        conductivity: state.conductivity,
+        forces: &state.forces,
+        shanks: &state.shanks,
+    };
+    let rows = chain.cells().rings(&load, 0);
+    let inside = rows
+        .iter()
+        .filter(|row| row.radius[1] <= cone.contact_radius * (1.0 + 1e-12));
+    let (radius, area) = inside
+        .map(|row| (0.5 * (row.radius[0] + row.radius[1]), row.area))
+        .unzip();
+    Rings { radius, area }
+}
+
+fn cone_of(cone: &Cone) -> serde_json::Value {
+    let Profile::Power { radial, fall } = cone.profile else {
+        panic!("the demo uses the fitted shape");
+    };
+    json!({
+        "hole": cone.hole_radius,
+        "edge": cone.contact_radius,
+        "alpha": radial,
+        "beta": fall,
+        "peak_per_force": cone.peak_per_force,
+    })
+}
+
+/// Constants of the elastic-plastic law at fixed hardness, as the peer wants them.
+fn law(joint: &Joint, local: &Local) -> serde_json::Value {
+    let interface: &Interface = local.interface();
+    let surfaces = Surfaces::of(&interface.faces);
+    let hardness = interface
+        .faces
+        .iter()
+        .map(|face| match face.hardness {
+            ringsum::conductance::Hardness::Meyer(hardness) => hardness,
+            ringsum::conductance::Hardness::Micro { .. } => panic!("the demo has fixed hardness"),
+        })
+        .fold(f64::INFINITY, f64::min);
+    assert_eq!(joint.contact.law, Law::ElasticPlastic);
+    let mode = Asperities {
+        slope: surfaces.slope,
+        elastic_modulus: surfaces.elastic_modulus,
+        hardness,
+    }
+    .mode(joint.contact.law);
+    let front = surfaces.conductivity * surfaces.slope / surfaces.roughness
+        * mode.area_factor.sqrt()
+        / (2.0 * (2.0 * std::f64::consts::PI).sqrt());
+    json!({
+        "f": mode.area_factor,
+        "hardness": mode.hardness,
+        "front": front,
+        "open": local.total(0.0),
+    })
+}
+
+/// Outcome and median time of several runs, after one to warm up.
+fn timed(run: impl Fn() -> Vec<f64>) -> (Vec<f64>, f64) {
+    let outcome = black_box(run());
+    let mut seconds: Vec<f64> = (0..RUNS)
+        .map(|_| {
+            let start = Instant::now();
+            black_box(run());
+            start.elapsed().as_secs_f64()
+        })
+        .collect();
+    seconds.sort_by(f64::total_cmp);
+    (outcome, seconds[RUNS / 2])
+}
+
+/// First and last sum of the peer, and its median time.
+fn peer(python: &str, job: &serde_json::Value) -> (f64, f64, f64) {
+    let mut child = Command::new(python)
+        .arg("benches/peer/ring_sum.py")
+        .env("OMP_NUM_THREADS", "1")
+        .env("OPENBLAS_NUM_THREADS", "1")
+        .stdin(Stdio::piped())
+        .stdout(Stdio::piped())
+        .spawn()
+        .expect("the peer starts");
+    child
+        .stdin
+        .take()
+        .expect("standard input is piped")
+        .write_all(job.to_string().as_bytes())
+        .expect("the peer reads");
+    let output = child.wait_with_output().expect("the peer ends");
+    assert!(output.status.success(), "the peer failed");
+    let found: serde_json::Value = serde_json::from_slice(&output.stdout).expect("JSON");
+    let number = |value: &serde_json::Value| value.as_f64().expect("a number");
+    let mut seconds: Vec<f64> = found["seconds"]
+        .as_array()
+        .expect("a list")
+        .iter()
+        .map(number)
+        .collect();
+    seconds.sort_by(f64::total_cmp);
+    (
+        number(&found["first"]),
+        number(&found["last"]),
+        seconds[seconds.len() / 2],
+    )
+}

@@ -1,0 +1,247 @@
+//! Every caution of an estimate, gathered along the chain and put in order of gravity.
+
+mod faces;
+mod field;
+
+use crate::{
+    catalog,
+    diagnostic::{Caution, registry},
+    estimate::{CaseResult, Chain, Realisation, group_label, surfaces},
+    joint::{FillerKind, Joint, Medium},
+    preload,
+};
+
+/// A plain service temperature this far from assembly moves the clamp force noticeably, K.
+const NOTICEABLE: f64 = 40.0;
+/// Metal this hot burns skin on short contact, K (60 °C; ISO 13732-1 gives thresholds by time and
+/// material; this value from memory).
+const BURNS: f64 = 333.15;
+/// Source to sink this many times the contact-only value is limited by spreading.
+const SPREADING: f64 = 5.0;
+/// Shanks that carry more than this share of the contact conductance are worth a word.
+const BYPASS: f64 = 0.02;
+
+/// Every caution of the chain, the gravest first; equal gravity keeps the order of the chain.
+pub fn gathered(chain: &Chain, cases: &[CaseResult]) -> Vec<Caution> {
+    let joint = chain.joint();
+    let mut found = Vec::new();
+    found.extend(preload_cautions(chain));
+    found.extend(field::field_cautions(chain));
+    found.extend(faces::conductance_cautions(chain, cases));
+    found.extend(faces::material_cautions(joint));
+    found.extend(resistance_cautions(chain, cases));
+    found.extend(service_cautions(chain, cases));
+    found.dedup_by(|one, other| one == other);
+    found.sort_by_key(|caution| registry::gravity(caution.code));
+    found
+}
+
+/// Cautions of a torque sweep: those of tightening, and of what the sweep cannot promise.
+pub fn sweep_cautions(joint: &Joint) -> Vec<Caution> {
+    let mut found = Vec::new();
+    for fastener in &joint.fasteners {
+        let supports = preload::Supports::in_joint(joint, fastener);
+        let name = group_label(fastener);
+        let group = preload::Group {
+            name: &name,
+            fastener,
+            supports: &supports,
+        };
+        found.extend(preload::group_cautions(&group));
+        found.extend(preload::window_cautions(&group));
+    }
+    found.push(caution("service/defer", DEFER));
+    found.dedup_by(|one, other| one == other);
+    found.sort_by_key(|caution| registry::gravity(caution.code));
+    found
+}
+
+const DEFER: &str = "an estimate for design: local codes, the applicable standard and a responsible, \
+                     qualified engineer decide; prove a joint that matters by test";
+
+fn caution(code: &'static str, text: impl Into<String>) -> Caution {
+    Caution {
+        code,
+        text: text.into(),
+    }
+}
+
+fn preload_cautions(chain: &Chain) -> Vec<Caution> {
+    let joint = chain.joint();
+    let mut found = Vec::new();
+    for (fastener, prepared) in chain.groups() {
+        let name = group_label(fastener);
+        let group = preload::Group {
+            name: &name,
+            fastener,
+            supports: &prepared.supports,
+        };
+        found.extend(preload::group_cautions(&group));
+        found.extend(preload::window_cautions(&group));
+        for (case, named) in joint.service.cases.iter().enumerate() {
+            let force = preload::force_band(fastener).low;
+            let left = prepared.losses(joint, case, 1.0).balance(force);
+            let label = format!("{name}, {} case, lowest force", named.name);
+            found.extend(preload::opened(&label, left));
+        }
+    }
+    for case in &joint.service.cases {
+        let apart = (case.temperature - joint.service.assembly_temperature).abs();
+        if case.name == "service" && apart > NOTICEABLE {
+            found.push(caution(
+                "preload/temperature-not-acting",
+                format!(
+                    "service is {apart:.0} K away from assembly, and a plain temperature does not move the clamp \
+                     force; state hot and cold cases to let expansion act"
+                ),
+            ));
+        }
+    }
+    found
+}
+
+fn resistance_cautions(chain: &Chain, cases: &[CaseResult]) -> Vec<Caution> {
+    let mut found = Vec::new();
+    let bolts = chain.cones().len();
+    if cases
+        .first()
+        .is_some_and(|case| case.resistance_upper.is_none())
+    {
+        let several = if bolts > 1 {
+            "each bolt's cell is solved alone and passes no heat to its neighbours"
+        } else {
+            "the cell of the bolt is taken as a circle of equal area"
+        };
+        found.push(caution(
+            "resistance/cell",
+            format!("{several}; the cell ignores what lies between the bolts, and only the lower bound is proved"),
+        ));
+    }
+    if let Some(case) = cases.first() {
+        let contact = case.results.contact.resistance.nominal;
+        let whole = case.results.added_by_joint.resistance.nominal;
+        if whole > SPREADING * contact {
+            found.push(caution(
+                "service/spreading-limited",
+                format!(
+                    "the joint adds {:.0} times its contact-only resistance: heat squeezes through the plates to the \
+                     bolts; more plate thickness or more bolts help, torque and finish hardly",
+                    whole / contact
+                ),
+            ));
+        }
+        let shank: f64 = chain
+            .state(0, &Realisation::default())
+            .map_or(0.0, |state| state.shanks.iter().sum());
+        if shank * contact > BYPASS {
+            found.push(caution(
+                "resistance/bypass",
+                format!(
+                    "the bolt shanks carry {:.2} W/K beside the faces ({:.0} % of the contact conductance)",
+                    shank,
+                    100.0 * shank * contact
+                ),
+            ));
+        }
+    }
+    found
+}
+
+fn service_cautions(chain: &Chain, cases: &[CaseResult]) -> Vec<Caution> {
+    let joint = chain.joint();
+    let mut found = Vec::new();
+    let gas_matters = !surfaces::bridged(joint) && joint.filler.is_none();
+    match &joint.service.medium {
+        Medium::Gas { gas, .. } if gas_matters => {
+            found.extend(flatters(joint, &gas.name, cases));
+        }
+        Medium::Vacuum => found.extend(vacuum_materials(joint)),
+        Medium::Gas { .. } => {}
+    }
+    if insulates(joint) {
+        found.push(caution(
+            "service/isolation-and-bonding",
+            "a layer in this joint insulates or may insulate: neither electrical isolation nor bonding is proved here; \
+             bolts bridge it, burrs pierce it",
+        ));
+    }
+    for case in cases {
+        let Some(rise) = &case.rise else { continue };
+        let hottest = case.sink_temperature + rise.hottest.nominal;
+        if hottest > BURNS {
+            found.push(caution(
+                "service/hot-surface",
+                format!(
+                    "{} case: a surface reaches {:.0} °C and burns skin; guard or mark it as local rules ask",
+                    case.name,
+                    hottest - 273.15
+                ),
+            ));
+        }
+    }
+    found.push(caution("service/defer", DEFER));
+    found
+}
+
+/// How much better the joint reads in its gas than it would in vacuum.
+fn flatters(joint: &Joint, gas: &str, cases: &[CaseResult]) -> Option<Caution> {
+    let mut evacuated = joint.clone();
+    evacuated.service.medium = Medium::Vacuum;
+    let chain = Chain::new(&evacuated).ok()?;
+    let vacuum = chain.state(0, &Realisation::default()).ok()?.path;
+    let case = cases.first()?;
+    let ratio = vacuum.added_by_joint / case.results.added_by_joint.resistance.nominal;
+    Some(caution(
+        "service/air-flatters-vacuum",
+        format!(
+            "in vacuum this joint would add {ratio:.1} times what it adds in {gas}: a test in {gas} says little about \
+             vacuum"
+        ),
+    ))
+}
+
+fn vacuum_materials(joint: &Joint) -> Vec<Caution> {
+    let mut found: Vec<String> = joint
+        .plates
+        .iter()
+        .filter_map(|plate| {
+            let family = &plate.finish.coating.as_ref()?.plating.family;
+            ["cadmium", "zinc", "tin"]
+                .contains(&family.as_str())
+                .then(|| format!("{family} on {}", plate.name))
+        })
+        .collect();
+    let silicone = joint
+        .filler
+        .as_ref()
+        .and_then(|filler| catalog::filler(&filler.name))
+        .filter(|record| record.silicone);
+    found.extend(silicone.map(|record| record.name.clone()));
+    if found.is_empty() {
+        return Vec::new();
+    }
+    vec![caution(
+        "service/vacuum-materials",
+        format!(
+            "{} in vacuum: cadmium and zinc sublime, pure tin grows whiskers, silicone creeps and contaminates",
+            found.join(", ")
+        ),
+    )]
+}
+
+fn insulates(joint: &Joint) -> bool {
+    let film = joint.plates.iter().any(|plate| {
+        plate
+            .finish
+            .coating
+            .as_ref()
+            .is_some_and(|coating| !coating.plating.metal)
+    });
+    let filler = joint.filler.as_ref().is_some_and(|filler| {
+        catalog::filler(&filler.name)
+            .map_or(matches!(filler.kind, FillerKind::Layer { .. }), |record| {
+                record.insulates
+            })
+    });
+    film || filler
+}

@@ -1,0 +1,160 @@
+//! Cautions of the faces and of the materials: laws, finishes, fillers, temperatures, pairs.
+
+use crate::{
+    catalog::{self, MaterialKind},
+    diagnostic::Caution,
+    estimate::{CaseResult, Chain, Realisation, cautions::caution, surfaces},
+    joint::{Joint, Plate},
+};
+
+/// Roughness range of the slope rule, m.
+const SLOPE_RULE: [f64; 2] = [0.216e-6, 9.6e-6];
+/// Slope factors from here on come from the roughness rule, not from a measurement.
+const BY_RULE: f64 = 1.3;
+/// Handbook conductivity serves up to here, K.
+const DATA_TO: f64 = 400.0;
+/// Handbook conductivity serves down to here where no fit is known, K.
+const DATA_FROM: f64 = 250.0;
+
+pub(super) fn conductance_cautions(chain: &Chain, cases: &[CaseResult]) -> Vec<Caution> {
+    let joint = chain.joint();
+    let mut found = Vec::new();
+    if let Ok(state) = chain.state(0, &Realisation::default()) {
+        let peak = cases.first().map_or(0.0, |case| case.pressure.peak);
+        found.extend(state.faces.local.cautions(peak));
+    }
+    if !surfaces::bridged(joint) {
+        let by_rule: Vec<&Plate> = joint
+            .plates
+            .iter()
+            .filter(|plate| plate.finish.slope_factor >= BY_RULE)
+            .collect();
+        if !by_rule.is_empty() {
+            found.push(caution(
+                "conductance/finish-not-measured",
+                format!(
+                    "the asperity slope of {} comes from a roughness rule; such rules differ by a factor 2 to 3, and \
+                     contact conductance is proportional to it",
+                    names(&by_rule)
+                ),
+            ));
+        }
+        let outside: Vec<&Plate> = by_rule
+            .into_iter()
+            .filter(|plate| {
+                let rq = plate.finish.roughness.nominal;
+                !(SLOPE_RULE[0]..=SLOPE_RULE[1]).contains(&rq)
+            })
+            .collect();
+        if !outside.is_empty() {
+            found.push(caution(
+                "conductance/slope-range",
+                format!(
+                    "roughness of {} lies outside 0.216 to 9.6 µm Rq, where the slope rule was stated",
+                    names(&outside)
+                ),
+            ));
+        }
+    }
+    if let Some(record) = joint
+        .filler
+        .as_ref()
+        .and_then(|filler| catalog::filler(&filler.name))
+        && record.creeps
+    {
+        found.push(caution(
+            "filler/creep",
+            format!(
+                "{} creeps under load: tighten again after hours and after the first hot cycle, and count on less \
+                 clamp force",
+                record.name
+            ),
+        ));
+    }
+    found
+}
+
+pub(super) fn material_cautions(joint: &Joint) -> Vec<Caution> {
+    let mut found = Vec::new();
+    for plate in &joint.plates {
+        let material = &plate.material;
+        for case in &joint.service.cases {
+            let temperature = case.temperature;
+            if temperature < DATA_FROM && material.conductivity_fit.is_none() {
+                found.push(caution(
+                    "material/room-temperature-data",
+                    format!(
+                        "{}: the conductivity of {} is a room-temperature value, used at {temperature:.0} K",
+                        plate.name, material.name
+                    ),
+                ));
+            }
+            if temperature > DATA_TO {
+                found.push(caution(
+                    "material/above-range",
+                    format!(
+                        "{}: the data of {} are room-temperature values, used at {temperature:.0} K; strength, \
+                         hardness and creep change first",
+                        plate.name, material.name
+                    ),
+                ));
+            }
+        }
+        if material.kind == MaterialKind::Brittle {
+            found.push(caution(
+                "material/brittle",
+                format!(
+                    "{}: {} is brittle; bolt it through soft washers at low torque, its bending stress is not checked",
+                    plate.name, material.name
+                ),
+            ));
+        }
+    }
+    found.extend(galvanic(joint));
+    found
+}
+
+/// Pairs of families that corrode when wet, the nobler first.
+const GALVANIC: &[[&str; 2]] = &[
+    ["copper", "aluminium"],
+    ["silver", "aluminium"],
+    ["gold", "aluminium"],
+    ["graphite", "aluminium"],
+    ["nickel", "aluminium"],
+    ["stainless", "magnesium"],
+    ["copper", "magnesium"],
+    ["graphite", "magnesium"],
+    ["aluminium", "magnesium"],
+    ["copper", "zinc"],
+];
+
+fn galvanic(joint: &Joint) -> Option<Caution> {
+    let family = |plate: &Plate| {
+        plate.finish.coating.as_ref().map_or_else(
+            || plate.material.family.clone(),
+            |coating| match coating.plating.family.as_str() {
+                "" => plate.material.family.clone(),
+                family => family.to_owned(),
+            },
+        )
+    };
+    let [warm, cold] = [family(joint.warm()), family(joint.cold())];
+    let pair = GALVANIC.iter().find(|pair| {
+        (pair[0] == warm && pair[1] == cold) || (pair[0] == cold && pair[1] == warm)
+    })?;
+    Some(caution(
+        "material/galvanic",
+        format!(
+            "{} against {} corrodes where moisture reaches the joint; keep it dry, seal it or plate it",
+            pair[0], pair[1]
+        ),
+    ))
+}
+
+fn names(plates: &[&Plate]) -> String {
+    plates
+        .iter()
+        .map(|plate| plate.name.as_str())
+        .collect::<Vec<_>>()
+        .join(" and ")
+}

@@ -1,0 +1,152 @@
+//! Cautions of the pressure field: edges, neighbours, flatness, seats.
+
+use crate::{
+    catalog,
+    diagnostic::Caution,
+    estimate::{Chain, cautions::caution, group_label},
+    joint::{Engagement, Fastener, Joint},
+};
+
+/// Nearest neighbours farther apart than this many thicknesses of the thinner plate let it part
+/// and spread poorly between them (judgement).
+const WIDE_PITCH: f64 = 12.0;
+
+pub(super) fn field_cautions(chain: &Chain) -> Vec<Caution> {
+    let joint = chain.joint();
+    let cells = chain.cells();
+    let mut found = chain.field_cautions();
+    let cut = cells.cut_share.iter().copied().fold(0.0, f64::max);
+    if cut > 0.0 {
+        found.push(caution(
+            "pressure/cone-beyond-edge",
+            format!(
+                "up to {:.1} % of a bolt's closed-form field fell beyond an edge or into a hole; the rest was raised \
+                 to carry the whole force",
+                100.0 * cut
+            ),
+        ));
+    }
+    if cells.overlaps.iter().any(|overlaps| *overlaps) {
+        found.push(caution(
+            "pressure/overlap",
+            "contact zones of neighbouring bolts overlap and their pressures are added; the cone knows no other \
+             influence between bolts",
+        ));
+    }
+    if let Some(stated) = flatness_stated(joint) {
+        found.push(caution(
+            "pressure/flatness-ignored",
+            format!("{stated}; the cone takes both faces as flat, so neither gap nor lost contact is in these numbers"),
+        ));
+    }
+    let thinnest = joint
+        .plates
+        .iter()
+        .map(|plate| plate.thickness)
+        .fold(f64::INFINITY, f64::min);
+    if let Some(pitch) = widest_pitch(joint).filter(|pitch| *pitch > WIDE_PITCH * thinnest) {
+        found.push(caution(
+            "pressure/thin-plate-wide-pitch",
+            format!(
+                "bolts stand up to {:.0} mm apart on a {:.2} mm plate: between them the plates part, and heat must \
+                 travel along them",
+                pitch * 1e3,
+                thinnest * 1e3
+            ),
+        ));
+    }
+    for (fastener, _) in chain.groups() {
+        found.extend(seat_cautions(fastener));
+    }
+    found
+}
+
+fn seat_cautions(fastener: &Fastener) -> Vec<Caution> {
+    let name = group_label(fastener);
+    let mut found = Vec::new();
+    match (fastener.engagement, fastener.nut_seat) {
+        (Engagement::Nut, Some(nut)) => {
+            let head = fastener.head_seat.outer_radius;
+            if (nut.outer_radius / head - 1.0).abs() > 0.02 {
+                found.push(caution(
+                    "pressure/unequal-seats",
+                    format!(
+                        "{name}: head and nut press on unequal seats ({:.2} and {:.2} mm across); the cone takes the \
+                         smaller for both",
+                        2e3 * head,
+                        2e3 * nut.outer_radius
+                    ),
+                ));
+            }
+        }
+        (Engagement::Tapped { .. } | Engagement::Insert { .. }, _) => found.push(caution(
+            "pressure/tapped-cone",
+            format!(
+                "{name}: the cone stands for a head on both faces; a thread in the far plate pulls nearer to the \
+                 interface (reference joints: resistance 4 to 5 % higher in vacuum)"
+            ),
+        )),
+        (Engagement::Nut, None) => {}
+    }
+    if fastener.conical_seat {
+        found.push(caution(
+            "pressure/conical-seat",
+            format!("{name}: a countersunk head presses a cone, not the flat annulus of the pressure law"),
+        ));
+    }
+    if let Some(hole) = catalog::clearance_hole(&fastener.thread.name) {
+        let widest = fastener.hole_radius[0].max(fastener.hole_radius[1]);
+        if 2.0 * widest > hole.diameters[2] * 1.001 {
+            found.push(caution(
+                "pressure/large-hole",
+                format!(
+                    "{name}: a {:.2} mm hole is wider than the coarse clearance hole of {:.2} mm ({})",
+                    2e3 * widest,
+                    hole.diameters[2] * 1e3,
+                    hole.standard
+                ),
+            ));
+        }
+    }
+    found
+}
+
+/// What the file says of out-of-flatness, in words; none when it says nothing.
+fn flatness_stated(joint: &Joint) -> Option<String> {
+    let stated: Vec<String> = joint
+        .plates
+        .iter()
+        .filter_map(|plate| match (plate.bow, plate.flatness) {
+            (Some(bow), _) if bow != 0.0 => Some(format!(
+                "{} is {} by {:.0} µm",
+                plate.name,
+                if bow > 0.0 { "concave" } else { "convex" },
+                bow.abs() * 1e6
+            )),
+            (_, Some(flatness)) if flatness > 0.0 => Some(format!(
+                "{} is flat within {:.0} µm",
+                plate.name,
+                flatness * 1e6
+            )),
+            _ => None,
+        })
+        .collect();
+    (!stated.is_empty()).then(|| stated.join(", "))
+}
+
+/// Largest distance from a bolt to its nearest neighbour, m.
+fn widest_pitch(joint: &Joint) -> Option<f64> {
+    let places: Vec<[f64; 2]> = joint.bolts().map(|(_, place)| place).collect();
+    places
+        .iter()
+        .enumerate()
+        .filter_map(|(index, place)| {
+            places
+                .iter()
+                .enumerate()
+                .filter(|(other, _)| *other != index)
+                .map(|(_, other)| (place[0] - other[0]).hypot(place[1] - other[1]))
+                .reduce(f64::min)
+        })
+        .reduce(f64::max)
+}

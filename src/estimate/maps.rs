@@ -1,0 +1,74 @@
+//! The nominal fields of a joint at points and in rings, for drawings and tables.
+
+use crate::{
+    estimate::{Chain, Failure, FieldMap, Realisation, RingRow},
+    joint::{Joint, Outline, Plate},
+    resistance::Load,
+};
+
+/// Pressure and local conductance over the window of both plates, `columns` points wide.
+pub fn field_map(joint: &Joint, columns: usize) -> Result<FieldMap, Failure> {
+    let chain = Chain::new(joint)?;
+    let state = chain.state(0, &Realisation::default())?;
+    let window = window(joint);
+    let [left, lower, right, upper] = window;
+    let step = (right - left) / columns as f64;
+    let rows = ((upper - lower) / step).round().max(1.0) as usize;
+    let mut map = FieldMap {
+        window,
+        size: [columns, rows],
+        pressure: Vec::with_capacity(columns * rows),
+        conductance: Vec::with_capacity(columns * rows),
+    };
+    for row in 0..rows {
+        let y = lower + (upper - lower) * (row as f64 + 0.5) / rows as f64;
+        for column in 0..columns {
+            let x = left + (column as f64 + 0.5) * step;
+            let pressure = chain.cells().pressure_at([x, y], &state.forces);
+            map.pressure.push(pressure.unwrap_or(f64::NAN));
+            map.conductance
+                .push(pressure.map_or(f64::NAN, |pressure| state.faces.conductance(pressure)));
+        }
+    }
+    Ok(map)
+}
+
+/// The rings around every bolt, in file order.
+pub fn ring_tables(joint: &Joint) -> Result<Vec<Vec<RingRow>>, Failure> {
+    let chain = Chain::new(joint)?;
+    let state = chain.state(0, &Realisation::default())?;
+    let load = Load {
+        conductance: |pressure: f64| state.faces.conductance(pressure),
+        conductivity: state.conductivity,
+        forces: &state.forces,
+        shanks: &state.shanks,
+    };
+    Ok((0..state.forces.len())
+        .map(|bolt| chain.cells().rings(&load, bolt))
+        .collect())
+}
+
+/// The rectangle that holds both plates: left, lower, right, upper, m.
+fn window(joint: &Joint) -> [f64; 4] {
+    joint
+        .plates
+        .iter()
+        .map(extent)
+        .reduce(|one, other| {
+            [
+                one[0].min(other[0]),
+                one[1].min(other[1]),
+                one[2].max(other[2]),
+                one[3].max(other[3]),
+            ]
+        })
+        .expect("a joint has two plates")
+}
+
+fn extent(plate: &Plate) -> [f64; 4] {
+    let [x, y] = plate.origin;
+    match plate.outline {
+        Outline::Rectangle { size } => [x, y, x + size[0], y + size[1]],
+        Outline::Disc { radius } => [x - radius, y - radius, x + radius, y + radius],
+    }
+}

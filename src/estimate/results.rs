@@ -1,0 +1,254 @@
+//! What the chain found: plain results, upstream first.
+
+use crate::{
+    diagnostic::{Assumption, Caution},
+    joint::{Limit, RequirementKind},
+};
+
+/// Low, nominal and high of one number; low and high are absent when no draws were made.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Band {
+    /// 5 % quantile, or the unfavourable corner for forces.
+    pub low: Option<f64>,
+    /// The chain at nominal inputs.
+    pub nominal: f64,
+    /// 95 % quantile, or the favourable corner for forces.
+    pub high: Option<f64>,
+}
+
+impl Band {
+    /// A number without a band.
+    pub const fn nominal(nominal: f64) -> Self {
+        Self {
+            low: None,
+            nominal,
+            high: None,
+        }
+    }
+
+    /// Conductance from resistance and back: the ends change places.
+    pub fn inverse(&self) -> Self {
+        Self {
+            low: self.high.map(f64::recip),
+            nominal: self.nominal.recip(),
+            high: self.low.map(f64::recip),
+        }
+    }
+}
+
+/// One of the four results between its planes, K/W; conductance is its inverse.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct PlaneResult {
+    /// Resistance, K/W.
+    pub resistance: Band,
+}
+
+/// The five results of one thermal case.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Results {
+    /// The faying faces alone: ring sum.
+    pub contact: PlaneResult,
+    /// Mean of the first plate to mean of the last.
+    pub node_to_node: PlaneResult,
+    /// What the joint adds to the same path with perfect contact.
+    pub added_by_joint: PlaneResult,
+    /// Heated zone to sink surface.
+    pub source_to_sink: PlaneResult,
+    /// The same path with no joint resistance.
+    pub perfect_contact: PlaneResult,
+}
+
+/// One bolt.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct BoltResult {
+    /// Place in joint coordinates, m.
+    pub at: [f64; 2],
+    /// Clamp force at assembly, N.
+    pub force: Band,
+    /// Clamp force after losses, N.
+    pub force_in_service: Band,
+    /// Equivalent stress over yield: nominal and at the highest force; none without a yield strength.
+    pub strength_use: Option<[f64; 2]>,
+    /// Largest torque that passes every limit, N m; none when the preload is given.
+    pub largest_torque: Option<f64>,
+    /// Radius where contact ends, m.
+    pub contact_radius: f64,
+    /// Ring sum of this bolt at nominal, W/K.
+    pub contact_conductance: f64,
+}
+
+/// The pressure between the faces at nominal force.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct PressureResult {
+    /// Highest pressure, Pa.
+    pub peak: f64,
+    /// Area in contact, m².
+    pub contact_area: f64,
+    /// Distance from the nearest bolt axis that holds 95 % of the force, m.
+    pub radius_95: f64,
+    /// Force carried, N.
+    pub force: f64,
+    /// Widest gap, m; the cone knows none.
+    pub gap_max: Option<f64>,
+    /// Mean gap, m; the cone knows none.
+    pub gap_mean: Option<f64>,
+}
+
+/// Temperature rises above the mean sink surface, K.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Rise {
+    /// Mean of the source.
+    pub source: Band,
+    /// Hottest point of the first plate.
+    pub hottest: Band,
+    /// Mean drop across the interface.
+    pub interface_drop: Band,
+    /// Film drop from the sink surface to the coolant, where there is a film.
+    pub coolant_drop: Option<f64>,
+}
+
+/// Whether a requirement is met.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Met {
+    /// Also at the unfavourable quantile.
+    Yes,
+    /// Not even at nominal.
+    No,
+    /// At nominal, but not at the unfavourable quantile, or no band was computed.
+    Uncertain,
+}
+
+/// A requirement and how the joint stands to it.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct RequirementResult {
+    /// The limited quantity.
+    pub kind: RequirementKind,
+    /// The limit, K, K/W or W/K.
+    pub limit: f64,
+    /// Side of the limit.
+    pub bound: Limit,
+    /// The value that is compared, unfavourable quantile where there is one.
+    pub value: f64,
+    /// The verdict.
+    pub met: Met,
+}
+
+/// One thermal case: a sink temperature and everything that follows from it.
+#[derive(Clone, Debug, PartialEq)]
+pub struct CaseResult {
+    /// `service`, `hot` or `cold`.
+    pub name: &'static str,
+    /// Mean sink surface temperature, K.
+    pub sink_temperature: f64,
+    /// Every bolt in file order.
+    pub bolts: Vec<BoltResult>,
+    /// The pressure field.
+    pub pressure: PressureResult,
+    /// The results.
+    pub results: Results,
+    /// Proved lower bound of source to sink for the field used, K/W.
+    pub resistance_lower: Option<f64>,
+    /// Proved upper bound of source to sink for the field used, K/W; single round joints only.
+    pub resistance_upper: Option<f64>,
+    /// Ring discretisation error, relative to source to sink.
+    pub numerical_error: f64,
+    /// Area of the faying faces, m².
+    pub footprint: f64,
+    /// Temperature rises, when heat is stated.
+    pub rise: Option<Rise>,
+    /// The requirement, when stated.
+    pub requirement: Option<RequirementResult>,
+    /// Share of the variance of the source-to-sink resistance by input, largest first; empty without draws.
+    pub drivers: Vec<Driver>,
+}
+
+/// One input and its share of the spread.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Driver {
+    /// The input.
+    pub input: &'static str,
+    /// Share of the variance, 0 to 1.
+    pub share: f64,
+    /// What the engineer can do about it.
+    pub remedy: &'static str,
+}
+
+/// Everything `estimate` found, upstream first.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Estimate {
+    /// Title of the joint.
+    pub title: String,
+    /// Seed of the draws.
+    pub seed: u64,
+    /// Number of draws; 0 means nominal only.
+    pub draws: u32,
+    /// The field: `cone`.
+    pub field: &'static str,
+    /// The resolution: `normal`.
+    pub resolution: &'static str,
+    /// Name of the source plane.
+    pub source_plane: String,
+    /// Name of the sink plane.
+    pub sink_plane: String,
+    /// Heat through the joint, W.
+    pub heat: Option<f64>,
+    /// The cases; the first is the one the headline speaks of.
+    pub cases: Vec<CaseResult>,
+    /// Cautions, most grave first.
+    pub cautions: Vec<Caution>,
+    /// What the file did not state.
+    pub assumptions: Vec<Assumption>,
+}
+
+/// One torque of a sweep.
+#[derive(Clone, Debug, PartialEq)]
+pub struct TorquePoint {
+    /// Torque at the wrench, N m.
+    pub torque: f64,
+    /// Clamp force at assembly, N.
+    pub force: Band,
+    /// Source to sink, K/W.
+    pub source_to_sink: Band,
+    /// Contact only, K/W.
+    pub contact: Band,
+    /// What the joint adds, K/W.
+    pub added_by_joint: Band,
+    /// Equivalent stress over yield: nominal and at the highest force.
+    pub strength_use: Option<[f64; 2]>,
+    /// Whether every strength limit holds at this torque.
+    pub passes: bool,
+}
+
+/// Resistance against the torque of one fastener group, the others as stated.
+#[derive(Clone, Debug, PartialEq)]
+pub struct TorqueSweep {
+    /// Title of the joint.
+    pub title: String,
+    /// Group that is varied, for people: `M4 socket, 6 places`.
+    pub group: String,
+    /// Torque stated in the file, N m.
+    pub stated: f64,
+    /// Largest torque that passes every limit, N m, and the limit that ends it.
+    pub largest: Option<(f64, &'static str)>,
+    /// Torque of the lowest source-to-sink resistance within the sweep, N m.
+    pub best: f64,
+    /// Points, torque rising.
+    pub points: Vec<TorquePoint>,
+    /// Requirement in K/W of source to sink, where one can be put so.
+    pub required: Option<(f64, Limit)>,
+    /// Cautions.
+    pub cautions: Vec<Caution>,
+}
+
+/// The plan of the joint and its fields at nominal, for drawings.
+#[derive(Clone, Debug, PartialEq)]
+pub struct FieldMap {
+    /// Left, lower, right and upper edge of the window, m.
+    pub window: [f64; 4],
+    /// Columns and rows.
+    pub size: [usize; 2],
+    /// Pressure at cell centres, row by row from below, Pa; NaN off the faying faces.
+    pub pressure: Vec<f64>,
+    /// Local conductance, W/(m² K), likewise.
+    pub conductance: Vec<f64>,
+}

@@ -1,0 +1,116 @@
+//! What the cold forbids: room-temperature data, and the laws of contact below 30 K.
+
+use crate::{
+    catalog::{ColdFault, Grade, Material},
+    joint::{
+        Case, FillerKind, Joint,
+        collector::{Collector, Wording, fault},
+        record::Record,
+        tree::Span,
+    },
+    units::{self, Quantity},
+};
+
+/// Below this bare metal contacts follow none of the laws, K: 0.01 to 0.26 W/K were measured
+/// where they say 24 to 49.
+const LAWS_END: f64 = 30.0;
+
+/// Checks every case against what is known of the materials, and whether the faces have all they
+/// need.
+pub(super) fn check(joint: &Joint, file: &Record, collector: &mut Collector) {
+    let plates = file.records("plate");
+    for (plate, record) in joint.plates.iter().zip(plates) {
+        let span = record.span("material");
+        cold_data(&plate.material, joint, &span, collector);
+    }
+    for (fastener, record) in joint.fasteners.iter().zip(file.records("fastener")) {
+        let cold = joint
+            .service
+            .cases
+            .iter()
+            .find_map(|case| bolt(&fastener.grade, joint, case).err());
+        if let Some(cold) = cold {
+            collector.report(cold_fault(&cold, &record.span("grade")));
+        }
+    }
+    if is_bare(joint) {
+        for (plate, record) in joint.plates.iter().zip(plates) {
+            let material = &plate.material;
+            let known = material.hardness.is_some() || material.microhardness.is_some();
+            collector.require(known, || {
+                fault(
+                    "material/missing-property",
+                    &record.span("material"),
+                    format!(
+                        "`{}` has no hardness, which bare contact needs",
+                        material.name
+                    ),
+                )
+                .expecting("expected a material with hardness")
+                .help("state it: `material = { like = \"…\", hardness = \"1200 MPa\" }`")
+            });
+        }
+        for case in &joint.service.cases {
+            collector.require(case.temperature >= LAWS_END, || cold_contact(file, case));
+        }
+    }
+}
+
+/// Whether heat crosses bare faces by the laws.
+fn is_bare(joint: &Joint) -> bool {
+    let filled = joint
+        .filler
+        .as_ref()
+        .is_some_and(|filler| !matches!(filler.kind, FillerKind::Fluid { .. }));
+    !filled && joint.measured.is_none()
+}
+
+fn cold_data(material: &Material, joint: &Joint, span: &Span, collector: &mut Collector) {
+    for case in &joint.service.cases {
+        let unknown = material
+            .conductivity_at(case.temperature)
+            .err()
+            .or_else(|| contraction(material, joint, case).err());
+        if let Some(cold) = unknown {
+            collector.report(cold_fault(&cold, span));
+            return;
+        }
+    }
+}
+
+fn contraction(material: &Material, joint: &Joint, case: &Case) -> Result<f64, ColdFault> {
+    material.contraction_between(joint.service.assembly_temperature, case.temperature)
+}
+
+fn bolt(grade: &Grade, joint: &Joint, case: &Case) -> Result<f64, ColdFault> {
+    grade.conductivity_at(case.temperature)?;
+    grade.contraction_between(joint.service.assembly_temperature, case.temperature)
+}
+
+fn cold_fault(cold: &ColdFault, span: &Span) -> crate::diagnostic::Fault {
+    fault("material/cold-data", span, cold.to_string())
+        .expecting("no data at this temperature")
+        .help(
+            "state your own in a [[material]] table: `conductivity`, `expansion` and `valid_from = \"77 K\"`",
+        )
+}
+
+fn cold_contact(file: &Record, case: &Case) -> crate::diagnostic::Fault {
+    let service = file.record("service");
+    let span = service.map_or(0..0, |service| match service.record("temperature") {
+        Some(table) if table.has(case.name) => table.span(case.name),
+        _ => service.span("temperature"),
+    });
+    fault(
+        "service/cold-contact",
+        &span,
+        format!(
+            "bare metal contacts at {} follow no known law",
+            units::show(case.temperature, Quantity::Temperature)
+        ),
+    )
+    .expecting("expected 30 K or more for bare contact")
+    .help(
+        "measure it and state the force law: `[measured] law = { conductance = \"0.1 W/K\", force = \"1 kN\" }`",
+    )
+}

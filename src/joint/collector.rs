@@ -1,0 +1,106 @@
+//! Gathers every fault and every assumption of one reading.
+
+use crate::{
+    diagnostic::{self, Assumption, Fault},
+    joint::tree::Span,
+};
+
+/// So many faults are told; a file with more is not being read by anyone.
+const MOST_FAULTS: usize = 200;
+
+/// What one reading found.
+#[derive(Debug, Default)]
+pub(super) struct Collector {
+    faults: Vec<Fault>,
+    assumptions: Vec<Assumption>,
+}
+
+impl Collector {
+    /// Notes a fault.
+    pub(super) fn report(&mut self, fault: Fault) {
+        if self.faults.len() < MOST_FAULTS {
+            self.faults.push(fault);
+        }
+    }
+
+    /// Notes a fault unless the condition holds; false for NaN, so NaN is a fault.
+    pub(super) fn require(&mut self, holds: bool, fault: impl FnOnce() -> Fault) {
+        if !holds {
+            self.report(fault());
+        }
+    }
+
+    /// Notes a value that the file did not state.
+    pub(super) fn assume(
+        &mut self,
+        field: impl Into<String>,
+        value: impl Into<String>,
+        why: impl Into<String>,
+    ) {
+        self.assumptions.push(Assumption {
+            field: field.into(),
+            value: value.into(),
+            why: why.into(),
+        });
+    }
+
+    /// Number of faults so far.
+    pub(super) fn count(&self) -> usize {
+        self.faults.len()
+    }
+
+    /// Whether so many faults were found that looking for more is no use.
+    pub(super) fn is_full(&self) -> bool {
+        self.faults.len() >= MOST_FAULTS
+    }
+
+    /// Faults in file order, and assumptions in the order of reading.
+    pub(super) fn into_parts(mut self) -> (Vec<Fault>, Vec<Assumption>) {
+        self.faults.sort_by_key(|fault| fault.span.start);
+        (self.faults, self.assumptions)
+    }
+}
+
+/// A fault at a place; `expecting` and `help` complete it.
+pub(super) fn fault(code: &'static str, span: &Span, message: impl Into<String>) -> Fault {
+    Fault {
+        code,
+        message: message.into(),
+        span: span.clone(),
+        expected: String::new(),
+        help: None,
+    }
+}
+
+/// Completes a fault.
+pub(super) trait Wording {
+    /// The short label beside the underlined place.
+    fn expecting(self, label: impl Into<String>) -> Self;
+    /// How to mend it.
+    fn help(self, help: impl Into<String>) -> Self;
+    /// The nearest known name, if one is near.
+    fn nearest<'a>(self, name: &str, known: impl Iterator<Item = &'a str>) -> Self;
+}
+
+impl Wording for Fault {
+    fn expecting(mut self, label: impl Into<String>) -> Self {
+        self.expected = label.into();
+        self
+    }
+
+    fn help(mut self, help: impl Into<String>) -> Self {
+        self.help = Some(help.into());
+        self
+    }
+
+    fn nearest<'a>(mut self, name: &str, known: impl Iterator<Item = &'a str>) -> Self {
+        if let Some(near) = diagnostic::nearest(name, known) {
+            let help = format!("did you mean `{near}`?");
+            self.help = Some(match self.help {
+                Some(more) => format!("{help} {more}"),
+                None => help,
+            });
+        }
+        self
+    }
+}

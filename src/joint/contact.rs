@@ -1,0 +1,228 @@
+//! How the faces touch, and losses of clamp force.
+
+use crate::{
+    catalog::MaterialKind,
+    joint::{
+        ConeRule, ConeShape, Contact, Fastener, Law, Losses,
+        collector::{Collector, Wording, fault},
+        plates::PlateDraft,
+        record::{PerPlate, Record},
+        seats::unknown_plate,
+    },
+    units::{self, Quantity},
+};
+
+/// Hemispherical emissivity of bare machined metal, and of oxide films and non-metals (judgement).
+const EMISSIVITY: [f64; 2] = [0.1, 0.8];
+
+/// Short-term relaxation of all-metal joints in NASA practice (memory).
+const RELAXATION: f64 = 0.05;
+
+/// Guide values of settling by roughness Rz: below 10 µm, to 40 µm, above; in the thread, per
+/// head or nut bearing, per inner interface, m (VDI 2230 table 5, axial load, memory).
+const SETTLING: [[f64; 3]; 3] = [
+    [3.0e-6, 2.5e-6, 1.5e-6],
+    [3.0e-6, 3.0e-6, 2.0e-6],
+    [3.0e-6, 4.0e-6, 3.0e-6],
+];
+
+/// Rz over Rq taken to enter the guide values (practice, memory).
+const RZ_OVER_RQ: f64 = 5.0;
+
+/// Reads `[contact]` with the emissivity of both faces.
+pub(super) fn read(
+    file: &Record,
+    plates: &[PlateDraft; 2],
+    collector: &mut Collector,
+) -> Option<Contact> {
+    let absent = Record::absent("contact", &(0..0));
+    let record = match file.record("contact") {
+        Some(record) => record,
+        None if file.has("contact") => return None,
+        None => &absent,
+    };
+    let law = match record.text("law") {
+        None if record.has("law") => None,
+        Some("plastic") => Some(Law::Plastic),
+        Some("elastic") => Some(Law::Elastic),
+        Some("plastic-power") => Some(Law::PlasticPower),
+        _ => Some(Law::ElasticPlastic),
+    };
+    let cone = match (record.text("cone"), record.number("cone")) {
+        (None, None) if record.has("cone") => None,
+        (_, Some(angle)) => Some(ConeRule::HalfAngle(angle)),
+        (Some("vdi"), _) => Some(ConeRule::Vdi),
+        _ => Some(ConeRule::Fitted),
+    };
+    let shape = shape(record, cone, collector);
+    cone_limits(record, collector);
+    let emissivity = emissivity(record, plates, collector);
+    Some(Contact {
+        law: law?,
+        cone: cone?,
+        shape: shape?,
+        emissivity: emissivity?,
+    })
+}
+
+fn shape(record: &Record, cone: Option<ConeRule>, collector: &mut Collector) -> Option<ConeShape> {
+    let fitted = cone? == ConeRule::Fitted;
+    match record.text("shape") {
+        None if record.has("shape") => None,
+        Some("fitted") if !fitted => {
+            collector.report(
+                fault(
+                    "file/conflict",
+                    &record.span("shape"),
+                    "the fitted shape belongs to the fitted cone",
+                )
+                .expecting("expected `uniform`, `linear` or `polynomial`"),
+            );
+            None
+        }
+        Some("uniform") => Some(ConeShape::Uniform),
+        Some("linear") => Some(ConeShape::Linear),
+        Some("polynomial") => Some(ConeShape::Polynomial),
+        None if !fitted => Some(ConeShape::Linear),
+        _ => Some(ConeShape::Fitted),
+    }
+}
+
+/// The closed-form cone knows only the defaults of these.
+fn cone_limits(record: &Record, collector: &mut Collector) {
+    for (key, only) in [
+        ("head_model", "uniform"),
+        ("faces", "frictionless"),
+        ("compliance", "hard"),
+    ] {
+        if let Some(found) = record.text(key)
+            && found != only
+        {
+            collector.report(
+                fault(
+                    "contact/beyond-cone",
+                    &record.span(key),
+                    format!("the cone does not know `{key} = \"{found}\"`"),
+                )
+                .expecting(format!("expected `{only}`"))
+                .help(format!(
+                    "the closed-form cone stands for {key} `{only}` alone; leave the key out"
+                )),
+            );
+        }
+    }
+}
+
+fn emissivity(
+    record: &Record,
+    plates: &[PlateDraft; 2],
+    collector: &mut Collector,
+) -> Option<[f64; 2]> {
+    if record.has("emissivity") && record.per_plate("emissivity").is_none() {
+        return None;
+    }
+    let mut stated = [None; 2];
+    match record.per_plate("emissivity") {
+        None => {}
+        Some(PerPlate::Both(both)) => stated = [Some(*both); 2],
+        Some(PerPlate::Each(each)) => stated = each.map(Some),
+        Some(PerPlate::Named(named)) => {
+            for (name, span, value) in named {
+                match plates.iter().position(|plate| plate.name == *name) {
+                    Some(place) => stated[place] = Some(*value),
+                    None => collector.report(unknown_plate(name, span, plates)),
+                }
+            }
+        }
+    }
+    let mut emissivity = [0.0; 2];
+    for ((value, plate), common) in emissivity.iter_mut().zip(plates).zip(stated) {
+        let own = plate.record.number("emissivity");
+        if plate.record.has("emissivity") && own.is_none() {
+            return None;
+        }
+        *value = match own.or(common) {
+            Some(emissivity) => emissivity,
+            None => assumed_emissivity(plate, collector)?,
+        };
+    }
+    Some(emissivity)
+}
+
+fn assumed_emissivity(plate: &PlateDraft, collector: &mut Collector) -> Option<f64> {
+    let film = plate
+        .finish
+        .as_ref()?
+        .coating
+        .as_ref()
+        .is_some_and(|coating| !coating.plating.metal);
+    let metal = plate.material.as_ref()?.kind == MaterialKind::Metal;
+    let (emissivity, why) = if metal && !film {
+        (EMISSIVITY[0], "bare metal")
+    } else {
+        (EMISSIVITY[1], "an oxide film or a non-metal")
+    };
+    collector.assume(plate.record.at("emissivity"), emissivity.to_string(), why);
+    Some(emissivity)
+}
+
+/// Reads `[losses]`: the outer option is none when it is faulty.
+#[expect(clippy::option_option, reason = "faulty and not stated are two things")]
+pub(super) fn losses(
+    file: &Record,
+    plates: &[PlateDraft; 2],
+    fasteners: Option<&[Fastener]>,
+    collector: &mut Collector,
+) -> Option<Option<Losses>> {
+    if !file.has("losses") {
+        return Some(None);
+    }
+    let record = file.record("losses")?;
+    let relaxation = match record.number("relaxation") {
+        None if record.has("relaxation") => return None,
+        None => {
+            collector.assume(
+                record.at("relaxation"),
+                format!("{:.0} %", 100.0 * RELAXATION),
+                "not stated; usual for all-metal joints (from memory)",
+            );
+            RELAXATION
+        }
+        Some(relaxation) => relaxation,
+    };
+    let settling = match (record.number("settling"), record.text("settling")) {
+        (Some(settling), _) => settling,
+        (None, None) if record.has("settling") => return None,
+        _ => {
+            let settling = guide_settling(plates, fasteners?)?;
+            collector.assume(
+                record.at("settling"),
+                units::show(settling, Quantity::Length),
+                "guide values of VDI 2230 for thread, seats and interface (from memory)",
+            );
+            settling
+        }
+    };
+    Some(Some(Losses {
+        settling,
+        relaxation,
+    }))
+}
+
+/// Sum of the guide values over thread, seats and inner interfaces, m; the largest of all groups.
+fn guide_settling(plates: &[PlateDraft; 2], fasteners: &[Fastener]) -> Option<f64> {
+    let mut roughest: f64 = 0.0;
+    for plate in plates {
+        roughest = roughest.max(RZ_OVER_RQ * plate.finish.as_ref()?.roughness.nominal);
+    }
+    let row = SETTLING[usize::from(roughest >= 10e-6) + usize::from(roughest >= 40e-6)];
+    let [thread, bearing, interface] = row;
+    fasteners
+        .iter()
+        .map(|fastener| {
+            let bearings = 1.0 + f64::from(u8::from(fastener.nut_seat.is_some()));
+            let interfaces = 1.0 + f64::from(u8::from(fastener.washer_thickness > 0.0));
+            thread + bearings * bearing + interfaces * interface
+        })
+        .reduce(f64::max)
+}

@@ -1,0 +1,380 @@
+//! What fills the joint, and what the user has measured.
+
+use crate::{
+    catalog::{self, FillerRecord},
+    joint::{
+        Filler, FillerKind, Measured, MeasuredKind,
+        collector::{Collector, Wording, fault},
+        plates::two_ways,
+        record::Record,
+        sections::{FILLER, MEASURED},
+        tree::short,
+        walk::missing,
+    },
+    units::{self, Quantity},
+};
+
+/// Largest particle of a paste that states none, m: 10–40 µm is usual (memory).
+const THINNEST: f64 = 20e-6;
+
+/// Thickness of a paste as applied when none is stated, m (judgement: a stencilled layer).
+const APPLIED: f64 = 100e-6;
+
+/// Scatter of a filler of the catalogue and of one described by the user (judgement).
+const SCATTER: [f64; 2] = [0.3, 0.2];
+
+/// Scatter of the user's own measurements (judgement).
+const MEASURED_SCATTER: f64 = 0.1;
+
+/// Reads `[filler]`: the outer option is none when it is faulty.
+#[expect(clippy::option_option, reason = "faulty and not stated are two things")]
+pub(super) fn read(file: &Record, collector: &mut Collector) -> Option<Option<Filler>> {
+    if !file.has("filler") {
+        return Some(None);
+    }
+    let record = file.record("filler")?;
+    let name = record.text("name");
+    if let Some(name) = name
+        && name.eq_ignore_ascii_case("none")
+    {
+        return Some(None);
+    }
+    let known = name.and_then(catalog::filler);
+    let own = ["model", "conductivity", "table", "thickness", "bond_line"];
+    if known.is_none() && !own.iter().any(|key| record.has(key)) {
+        collector.report(unknown(record, name));
+        return None;
+    }
+    let kind = kind(record, known, collector)?;
+    let default = SCATTER[usize::from(known.is_none())];
+    Some(Some(Filler {
+        name: known.map_or_else(
+            || name.unwrap_or("filler").to_owned(),
+            |known| known.name.clone(),
+        ),
+        kind,
+        factor: 1.0 + scatter(record, default, collector)?,
+    }))
+}
+
+fn unknown(record: &Record, name: Option<&str>) -> crate::diagnostic::Fault {
+    let Some(name) = name else {
+        return missing(record, "name", "name = \"graphite foil\"");
+    };
+    let known = catalog::fillers().iter().flat_map(|filler| {
+        std::iter::once(filler.name.as_str()).chain(filler.aliases.iter().map(String::as_str))
+    });
+    fault(
+        "name/unknown",
+        &record.span("name"),
+        format!("no filler is called `{}`", short(name)),
+    )
+    .expecting("not in the catalogue, and no model is stated")
+    .help("describe your own: `model = \"layer\"` with `conductivity` and `thickness`")
+    .nearest(name, known)
+}
+
+fn scatter(record: &Record, default: f64, collector: &mut Collector) -> Option<f64> {
+    match record.number("scatter") {
+        None if record.has("scatter") => None,
+        None => {
+            collector.assume(
+                record.at("scatter"),
+                format!("{:.0} %", 100.0 * default),
+                "not stated; a judgement",
+            );
+            Some(default)
+        }
+        scatter => scatter,
+    }
+}
+
+fn kind(
+    record: &Record,
+    known: Option<&FillerRecord>,
+    collector: &mut Collector,
+) -> Option<FillerKind> {
+    if record.has("table") {
+        return table(record, collector);
+    }
+    // A stated bond line or thickness makes a layer of whatever it is.
+    let model = match record.text("model") {
+        Some(model) => model,
+        None if record.has("model") => return None,
+        None if record.has("bond_line") || record.has("thickness") => "layer",
+        None => known.map_or("layer", |known| known.model.as_str()),
+    };
+    match model {
+        "fluid" => Some(FillerKind::Fluid {
+            conductivity: conductivity(record, known, collector)?,
+        }),
+        "paste" => paste(record, known, collector),
+        "table" => {
+            collector.report(missing(record, "table", &line("table")));
+            None
+        }
+        _ => layer(record, known, collector),
+    }
+}
+
+fn line(key: &str) -> String {
+    FILLER
+        .field(key)
+        .map(crate::joint::fields::Field::line)
+        .unwrap_or_default()
+}
+
+fn conductivity(
+    record: &Record,
+    known: Option<&FillerRecord>,
+    collector: &mut Collector,
+) -> Option<f64> {
+    match (record.number("conductivity"), known) {
+        (Some(conductivity), _) => Some(conductivity),
+        (None, _) if record.has("conductivity") => None,
+        (None, Some(known)) => {
+            collector.assume(
+                record.at("conductivity"),
+                units::show(known.conductivity.value, Quantity::Conductivity),
+                format!("catalogue value of `{}`", known.name),
+            );
+            Some(known.conductivity.value)
+        }
+        (None, None) => {
+            collector.report(missing(record, "conductivity", &line("conductivity")));
+            None
+        }
+    }
+}
+
+fn table(record: &Record, collector: &mut Collector) -> Option<FillerKind> {
+    Some(FillerKind::Table {
+        points: rising(record, "table", collector)?,
+    })
+}
+
+fn layer(
+    record: &Record,
+    known: Option<&FillerRecord>,
+    collector: &mut Collector,
+) -> Option<FillerKind> {
+    if record.has("bond_line") && record.has("thickness") {
+        collector.report(two_ways(record, ["bond_line", "thickness"]));
+        return None;
+    }
+    let changed = ["bond_line", "thickness", "conductivity"]
+        .iter()
+        .any(|key| record.has(key));
+    if let Some(known) = known
+        && !changed
+        && !known.points.is_empty()
+    {
+        collector.assume(
+            record.at("table"),
+            format!("{} points of `{}`", known.points.len(), known.name),
+            known.source.clone(),
+        );
+        return Some(FillerKind::Table {
+            points: known.points.clone(),
+        });
+    }
+    let key = if record.has("bond_line") {
+        "bond_line"
+    } else {
+        "thickness"
+    };
+    let supplied = known.and_then(|known| known.thickness.as_ref());
+    let thickness = match (record.number(key), supplied) {
+        (None, _) if record.has(key) => None,
+        (None, Some(supplied)) => {
+            collector.assume(
+                record.at(key),
+                units::show(supplied.value, Quantity::Length),
+                "thickness as supplied, uncompressed",
+            );
+            Some(supplied.value)
+        }
+        (None, None) => {
+            collector.report(missing(record, "thickness", &line("thickness")));
+            None
+        }
+        (thickness, _) => thickness,
+    };
+    let conductivity = conductivity(record, known, collector);
+    let boundary = match record.number("boundary") {
+        None if record.has("boundary") => return None,
+        None => {
+            collector.assume(record.at("boundary"), "0", "not stated");
+            0.0
+        }
+        Some(boundary) => boundary,
+    };
+    Some(FillerKind::Layer {
+        conductivity: conductivity?,
+        thickness: thickness?,
+        boundary,
+    })
+}
+
+fn paste(
+    record: &Record,
+    known: Option<&FillerRecord>,
+    collector: &mut Collector,
+) -> Option<FillerKind> {
+    let conductivity = conductivity(record, known, collector);
+    let from_catalogue = known.and_then(|known| known.yield_stress.as_ref());
+    let yield_stress = match (record.number("yield_stress"), from_catalogue) {
+        (None, _) if record.has("yield_stress") => None,
+        (None, Some(datum)) => {
+            collector.assume(
+                record.at("yield_stress"),
+                units::show(datum.value, Quantity::Pressure),
+                format!("catalogue value: {}", datum.source),
+            );
+            Some(datum.value)
+        }
+        (None, None) => {
+            collector.report(missing(record, "yield_stress", &line("yield_stress")));
+            None
+        }
+        (stated, _) => stated,
+    };
+    let mut length = |key: &str, default: f64, why: &str| match record.number(key) {
+        None if record.has(key) => None,
+        None => {
+            collector.assume(record.at(key), units::show(default, Quantity::Length), why);
+            Some(default)
+        }
+        stated => stated,
+    };
+    let thinnest = length(
+        "thinnest",
+        THINNEST,
+        "not stated; particles of pastes are 10 to 40 µm",
+    );
+    let applied = length("applied", APPLIED, "not stated; a judgement");
+    let (thinnest, applied) = (thinnest?, applied?);
+    collector.require(thinnest <= applied, || {
+        fault(
+            "value/min-above-max",
+            &record.span(if record.has("applied") {
+                "applied"
+            } else {
+                "thinnest"
+            }),
+            "the paste is applied thinner than its thinnest bond line",
+        )
+        .expecting("expected `thinnest` ≤ `applied`")
+    });
+    Some(FillerKind::Paste {
+        conductivity: conductivity?,
+        yield_stress: yield_stress?,
+        thinnest,
+        applied,
+    })
+}
+
+/// Pairs whose first value rises and is not negative, and whose second is positive.
+fn rising(record: &Record, key: &str, collector: &mut Collector) -> Option<Vec<(f64, f64)>> {
+    let pairs = record.pairs(key)?;
+    if pairs.is_empty() {
+        collector.report(
+            fault(
+                "file/wrong-type",
+                &record.span(key),
+                format!("`{key}` is empty"),
+            )
+            .expecting("expected at least one pair"),
+        );
+        return None;
+    }
+    let mut good = true;
+    let mut last = -1.0;
+    for ([first, second], span) in pairs {
+        let holds = *first >= 0.0 && *first < 1e12 && *second > 0.0 && *second < 1e12;
+        collector.require(holds, || {
+            fault(
+                "value/range",
+                span,
+                format!("a pair of `{key}` is beyond what it can be"),
+            )
+            .expecting("expected a pressure from 0 and a value above 0")
+        });
+        collector.require(!holds || *first > last, || {
+            fault(
+                "value/not-rising",
+                span,
+                format!("the pressures of `{key}` do not rise"),
+            )
+            .expecting("expected a higher pressure than before")
+            .help("list the pairs from the lowest pressure to the highest, each once")
+        });
+        good &= holds && *first > last;
+        last = last.max(*first);
+    }
+    good.then(|| pairs.iter().map(|([p, value], _)| (*p, *value)).collect())
+}
+
+/// Reads `[measured]`: the outer option is none when it is faulty. `temperature` is that of
+/// service, K.
+#[expect(clippy::option_option, reason = "faulty and not stated are two things")]
+pub(super) fn measured(
+    file: &Record,
+    temperature: Option<f64>,
+    collector: &mut Collector,
+) -> Option<Option<Measured>> {
+    if !file.has("measured") {
+        return Some(None);
+    }
+    let record = file.record("measured")?;
+    let kind = match (record.has("points"), record.has("law")) {
+        (true, true) => {
+            collector.report(two_ways(record, ["points", "law"]));
+            return None;
+        }
+        (true, false) => MeasuredKind::Local {
+            points: rising(record, "points", collector)?,
+        },
+        (false, true) => law(record.record("law")?, temperature, collector)?,
+        (false, false) => {
+            let line = MEASURED
+                .field("points")
+                .map(crate::joint::fields::Field::line);
+            collector.report(missing(record, "points", &line.unwrap_or_default()));
+            return None;
+        }
+    };
+    Some(Some(Measured {
+        kind,
+        factor: 1.0 + scatter(record, MEASURED_SCATTER, collector)?,
+    }))
+}
+
+fn law(record: &Record, service: Option<f64>, collector: &mut Collector) -> Option<MeasuredKind> {
+    let mut exponent = |key: &str, default: f64, why: &str| match record.number(key) {
+        None if record.has(key) => None,
+        None => {
+            collector.assume(record.at(key), default.to_string(), why);
+            Some(default)
+        }
+        stated => stated,
+    };
+    let force_exponent = exponent("force_exponent", 1.0, "not stated: in proportion to force");
+    let temperature_exponent = exponent(
+        "temperature_exponent",
+        0.0,
+        "not stated: the same at any temperature",
+    );
+    let temperature = match record.number("temperature") {
+        None if record.has("temperature") => None,
+        None => service,
+        stated => stated,
+    };
+    Some(MeasuredKind::ForceLaw {
+        conductance: record.number("conductance")?,
+        force: record.number("force")?,
+        force_exponent: force_exponent?,
+        temperature: temperature?,
+        temperature_exponent: temperature_exponent?,
+    })
+}

@@ -1,0 +1,361 @@
+//! `--set plate.upper.thickness="6 mm"`: values that override the file, in the tree, before it is read.
+
+use toml::de::DeValue;
+
+use crate::{
+    diagnostic::{self, Fault},
+    joint::{
+        collector::{Collector, Wording, fault},
+        fields::{Kind, SPREAD_KEYS, Section, listed},
+        sections::FILE,
+        tree::{Form, Key, Node, Span, short},
+    },
+};
+
+/// Applies one override, whose text starts `shift` bytes into the joined text.
+pub(super) fn apply(tree: &mut Node, text: &str, shift: usize, collector: &mut Collector) {
+    let whole = shift..shift + text.len();
+    let Some(equals) = equals(text) else {
+        collector.report(
+            fault(CODE, &whole, "an override has a path, `=` and a value")
+                .expecting("expected `path = value`")
+                .help(EXAMPLE),
+        );
+        return;
+    };
+    let steps = match steps(&text[..equals], shift) {
+        Ok(steps) => steps,
+        Err(span) => {
+            collector.report(
+                fault(CODE, &span, "this path cannot be read")
+                    .expecting("expected keys joined by dots")
+                    .help(EXAMPLE),
+            );
+            return;
+        }
+    };
+    let written = &text[equals + 1..];
+    let start = shift + equals + 1 + (written.len() - written.trim_start().len());
+    let value = Written {
+        text: written.trim(),
+        start,
+    };
+    if let Err(told) = set_in(tree, &FILE, &steps, value) {
+        collector.report(*told);
+    }
+}
+
+const CODE: &str = "set/bad-override";
+const EXAMPLE: &str = "for example `--set plate.upper.thickness=\"6 mm\"`";
+
+/// A step of a path.
+#[derive(Debug)]
+struct Step {
+    span: Span,
+    name: String,
+    /// `[2]` is 2: counted from one.
+    index: Option<usize>,
+}
+
+/// The value as written.
+#[derive(Clone, Copy, Debug)]
+struct Written<'t> {
+    text: &'t str,
+    start: usize,
+}
+
+impl Written<'_> {
+    fn span(self) -> Span {
+        self.start..self.start + self.text.len()
+    }
+
+    /// The value as TOML, or as text when it is bare text such as `6 mm`; a field that takes
+    /// text takes a bare number as text too, so that `grade=8.8` is a grade.
+    fn node(self, kind: Kind) -> Node {
+        let as_text = || Node {
+            span: self.span(),
+            form: Form::Text(self.text.to_owned()),
+        };
+        match DeValue::parse(self.text) {
+            Ok(value) => {
+                let node = Node::value(&value, self.start);
+                let wants_text = matches!(kind, Kind::Text | Kind::Name(_) | Kind::Choice(_));
+                if wants_text && matches!(node.form, Form::Number(..) | Form::Flag(_)) {
+                    as_text()
+                } else {
+                    node
+                }
+            }
+            Err(_) => as_text(),
+        }
+    }
+}
+
+type Told = Result<(), Box<Fault>>;
+
+fn bad(step: &Step, message: impl Into<String>) -> Fault {
+    fault(CODE, &step.span, message)
+}
+
+fn set_in(node: &mut Node, section: &'static Section, steps: &[Step], value: Written<'_>) -> Told {
+    let Some((step, rest)) = steps.split_first() else {
+        return Ok(());
+    };
+    let Some(field) = section.field(&step.name) else {
+        let told = bad(
+            step,
+            format!("there is no field `{}` here", short(&step.name)),
+        )
+        .expecting("not a key of this table");
+        let told = told.nearest(&step.name, section.keys());
+        return Err(Box::new(if told.help.is_some() {
+            told
+        } else {
+            told.help(format!(
+                "known are {}",
+                listed(&section.keys().collect::<Vec<_>>())
+            ))
+        }));
+    };
+    if step.index.is_some() && !matches!(field.kind, Kind::List(_)) {
+        return Err(Box::new(
+            bad(step, format!("`{}` is not a list of tables", field.key))
+                .expecting("expected without `[ ]`"),
+        ));
+    }
+    match (field.kind, rest) {
+        (Kind::List(inner), rest) => {
+            let list = slot(node, section, step)?;
+            let (element, rest) = element(list, step, rest)?;
+            if rest.is_empty() {
+                return Err(Box::new(
+                    bad(step, format!("`{}` is a whole table", step.name))
+                        .expecting("expected a path to one of its fields")
+                        .help(EXAMPLE),
+                ));
+            }
+            set_in(element, inner, rest, value)
+        }
+        (kind, []) => {
+            *slot(node, section, step)? = value.node(kind);
+            Ok(())
+        }
+        (Kind::Table(inner), rest) => set_in(slot(node, section, step)?, inner, rest, value),
+        (Kind::Spread(_) | Kind::SpreadOr(_), [last])
+            if SPREAD_KEYS.contains(&last.name.as_str()) =>
+        {
+            let spread = slot(node, section, step)?;
+            open_spread(spread);
+            put(spread, last, value.node(Kind::Number))
+        }
+        (Kind::PerPlate(_), [plate]) => {
+            let values = slot(node, section, step)?;
+            if !matches!(values.form, Form::Table(_)) {
+                values.form = Form::Table(Vec::new());
+            }
+            put(values, plate, value.node(Kind::Number))
+        }
+        (_, [next, ..]) => Err(Box::new(
+            bad(next, format!("`{}` has no parts", field.key))
+                .expecting(format!("expected to end at `{}`", field.key)),
+        )),
+    }
+}
+
+/// The value under a key, made when it is absent; a plain value in place of a table is opened
+/// into that table first, so that `torque = "2 N·m"` can be given a tolerance.
+fn slot<'n>(
+    node: &'n mut Node,
+    section: &Section,
+    step: &Step,
+) -> Result<&'n mut Node, Box<Fault>> {
+    if !matches!(node.form, Form::Table(_)) {
+        let old = node.clone();
+        let entry = section.shorthand.filter(|_| !is_empty(&old)).map(|key| {
+            let name = Key {
+                span: old.span.clone(),
+                name: key.to_owned(),
+            };
+            (name, old)
+        });
+        node.form = Form::Table(entry.into_iter().collect());
+    }
+    child(node, step)
+}
+
+fn is_empty(node: &Node) -> bool {
+    matches!(&node.form, Form::List(nodes) if nodes.is_empty())
+}
+
+/// The child of a table under a key, made when it is absent.
+fn child<'n>(node: &'n mut Node, step: &Step) -> Result<&'n mut Node, Box<Fault>> {
+    let absent = Node {
+        span: step.span.clone(),
+        form: Form::List(Vec::new()),
+    };
+    if !matches!(node.form, Form::Table(_)) {
+        node.form = Form::Table(Vec::new());
+    }
+    let Form::Table(entries) = &mut node.form else {
+        let told = bad(step, "this is not a table in the file").expecting("expected a table");
+        return Err(Box::new(told));
+    };
+    let place = entries
+        .iter()
+        .position(|(key, _)| key.name == step.name)
+        .unwrap_or_else(|| {
+            let name = Key {
+                span: step.span.clone(),
+                name: step.name.clone(),
+            };
+            entries.push((name, absent));
+            entries.len() - 1
+        });
+    Ok(&mut entries[place].1)
+}
+
+fn put(node: &mut Node, step: &Step, value: Node) -> Told {
+    *child(node, step)? = value;
+    Ok(())
+}
+
+/// Turns a single value or a list of a spread into its table form.
+fn open_spread(node: &mut Node) {
+    let old = std::mem::replace(&mut node.form, Form::Table(Vec::new()));
+    let (keys, values): (&[&str], Vec<Node>) = match old {
+        Form::Table(_) => {
+            node.form = old;
+            return;
+        }
+        Form::List(values) if values.len() == 2 => (&["low", "high"], values),
+        Form::List(values) => (&SPREAD_KEYS, values),
+        form => (
+            &["nominal"],
+            vec![Node {
+                span: node.span.clone(),
+                form,
+            }],
+        ),
+    };
+    let entries = keys.iter().zip(values).map(|(key, value)| {
+        let name = Key {
+            span: value.span.clone(),
+            name: (*key).to_owned(),
+        };
+        (name, value)
+    });
+    node.form = Form::Table(entries.collect());
+}
+
+/// The table of a list that a path names: `plate.upper`, `fastener[2]`, or the only one.
+fn element<'n, 's>(
+    list: &'n mut Node,
+    step: &Step,
+    rest: &'s [Step],
+) -> Result<(&'n mut Node, &'s [Step]), Box<Fault>> {
+    if let Form::Table(_) = list.form {
+        let only = list.clone();
+        list.form = Form::List(vec![only]);
+    }
+    let Form::List(nodes) = &mut list.form else {
+        return Err(Box::new(bad(
+            step,
+            format!("`{}` is not a table in the file", step.name),
+        )));
+    };
+    let count = nodes.len();
+    if let Some(index) = step.index {
+        return match nodes.get_mut(index.wrapping_sub(1)) {
+            Some(node) => Ok((node, rest)),
+            None => Err(Box::new(
+                bad(step, format!("the file has no `{}[{index}]`", step.name))
+                    .expecting(format!("expected from 1 to {count}")),
+            )),
+        };
+    }
+    let names: Vec<String> = nodes
+        .iter()
+        .enumerate()
+        .filter_map(|(place, node)| {
+            let default = match (step.name.as_str(), place) {
+                ("plate", 0) => Some("upper"),
+                ("plate", 1) => Some("lower"),
+                _ => None,
+            };
+            node.text_of("name").or(default).map(str::to_owned)
+        })
+        .collect();
+    if let Some((name, after)) = rest.split_first()
+        && let Some(place) = names.iter().position(|known| *known == name.name)
+        && names.len() == count
+    {
+        return Ok((&mut nodes[place], after));
+    }
+    if count == 1 && names.is_empty() {
+        return Ok((&mut nodes[0], rest));
+    }
+    let at = rest.first().unwrap_or(step);
+    let told = bad(
+        at,
+        format!("no `{}` is called `{}`", step.name, short(&at.name)),
+    );
+    Err(Box::new(if names.is_empty() {
+        bad(step, format!("the file has {count} tables `{}`", step.name))
+            .expecting(format!("expected `{}[1]`, counted from one", step.name))
+    } else {
+        let known: Vec<&str> = names.iter().map(String::as_str).collect();
+        let told = told.expecting(format!("expected {}", listed(&known)));
+        match diagnostic::nearest(&at.name, known.into_iter()) {
+            Some(near) => told.help(format!("did you mean `{near}`?")),
+            None => told,
+        }
+    }))
+}
+
+/// Place of the `=` between path and value, outside quotes.
+fn equals(text: &str) -> Option<usize> {
+    let mut quoted = false;
+    text.char_indices().find_map(|(at, letter)| {
+        if letter == '"' {
+            quoted = !quoted;
+        }
+        (letter == '=' && !quoted).then_some(at)
+    })
+}
+
+/// The steps of a path: keys joined by dots, in quotes where a name has a dot, with `[n]`.
+fn steps(path: &str, shift: usize) -> Result<Vec<Step>, Span> {
+    let mut steps = Vec::new();
+    let mut start = 0;
+    let mut quoted = false;
+    let ends = path.char_indices().filter(|(_, letter)| {
+        if *letter == '"' {
+            quoted = !quoted;
+        }
+        *letter == '.' && !quoted
+    });
+    let ends: Vec<usize> = ends.map(|(at, _)| at).chain([path.len()]).collect();
+    for end in ends {
+        let part = &path[start..end];
+        let offset = shift + start + (part.len() - part.trim_start().len());
+        let part = part.trim();
+        let span = offset..offset + part.len();
+        let (name, index) = match part
+            .strip_suffix(']')
+            .and_then(|part| part.rsplit_once('['))
+        {
+            Some((name, index)) => match index.trim().parse() {
+                Ok(index) => (name, Some(index)),
+                Err(_) => return Err(span),
+            },
+            None => (part, None),
+        };
+        let name = name.trim().trim_matches('"').to_owned();
+        if name.is_empty() {
+            return Err(span.start..span.end.max(span.start + 1));
+        }
+        steps.push(Step { span, name, index });
+        start = end + 1;
+    }
+    Ok(steps)
+}

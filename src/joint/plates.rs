@@ -1,0 +1,325 @@
+//! The two plates, where they lie on each other, where heat enters and leaves.
+
+use crate::{
+    catalog::Material,
+    joint::{
+        Finish, Outline, Plate, Sink, Source, Zone,
+        collector::{Collector, Wording, fault},
+        finishes,
+        geometry::{Placed, holds_zone, overlap},
+        materials::{self, Own, duplicate},
+        record::Record,
+        walk::missing,
+    },
+};
+
+/// Plates this version reads.
+const COUNT: usize = 2;
+
+/// A plate as far as it could be read.
+#[derive(Debug)]
+pub(super) struct PlateDraft {
+    /// Name.
+    pub name: String,
+    /// Its table.
+    pub record: Record,
+    /// Material.
+    pub material: Option<Material>,
+    /// Thickness, m.
+    pub thickness: Option<f64>,
+    /// Outline.
+    pub outline: Option<Outline>,
+    /// Where its own origin lies in the joint, m.
+    pub origin: Option<[f64; 2]>,
+    /// Faying face.
+    pub finish: Option<Finish>,
+    /// Known bow, m.
+    pub bow: Option<f64>,
+}
+
+impl PlateDraft {
+    /// Outline and origin.
+    pub(super) fn placed(&self) -> Option<Placed> {
+        Some((self.outline?, self.origin?))
+    }
+
+    /// The finished plate.
+    pub(super) fn finished(self) -> Option<Plate> {
+        Some(Plate {
+            flatness: self
+                .record
+                .record("finish")
+                .and_then(|finish| finish.number("flatness")),
+            name: self.name,
+            material: self.material?,
+            thickness: self.thickness?,
+            outline: self.outline?,
+            origin: self.origin?,
+            finish: self.finish?,
+            bow: self.bow,
+        })
+    }
+}
+
+/// Reads both plates; none when there are not two.
+pub(super) fn read(
+    file: &Record,
+    own: &Own,
+    collector: &mut Collector,
+) -> Option<[PlateDraft; COUNT]> {
+    let records = file.records("plate");
+    if !file.has("plate") || (records.is_empty() && !file.span("plate").is_empty()) {
+        return None;
+    }
+    if let Some(third) = records.get(COUNT) {
+        collector.report(
+            fault(
+                "plate/count",
+                &third.place,
+                format!("the file has {} plates", records.len()),
+            )
+            .expecting("this version reads two plates")
+            .help("join two plates at a time; a shim of metal is a [filler] of model \"layer\""),
+        );
+    }
+    let [first, second, ..] = records else {
+        if let [only] = records {
+            collector.report(
+                fault("plate/count", &only.place, "the file has one plate")
+                    .expecting("expected a second [[plate]]")
+                    .help("a joint has two plates, the warm one first"),
+            );
+        }
+        return None;
+    };
+    let mut upper = draft(first, "upper", own, collector);
+    let mut lower = draft(second, "lower", own, collector);
+    if upper.name == lower.name {
+        collector.report(duplicate("plate", &lower.name, &second.span("name")));
+    }
+    misplaced(first, &["offset", "cooled"], "second", collector);
+    misplaced(second, &["heated"], "first", collector);
+    upper.origin = Some([0.0, 0.0]);
+    lower.origin = origin_of_second(&upper, &lower, collector);
+    if let (Some(above), Some(below)) = (upper.placed(), lower.placed()) {
+        collector.require(overlap(above, below), || {
+            fault(
+                "plate/no-overlap",
+                &second.span("offset"),
+                "the plates do not lie on each other",
+            )
+            .expecting("expected a place on this plate")
+            .help("`offset` is where the corner (round: the centre) of the first plate lies on the second")
+        });
+    }
+    Some([upper, lower])
+}
+
+fn draft(record: &Record, default_name: &str, own: &Own, collector: &mut Collector) -> PlateDraft {
+    let bow = record.record("bow").and_then(|bow| {
+        let height = bow.number("height")?;
+        Some(if bow.text("kind")? == "convex" {
+            -height
+        } else {
+            height
+        })
+    });
+    if let Some(finish) = record.record("finish")
+        && !finish.has("flatness")
+        && !record.has("bow")
+    {
+        collector.assume(
+            finish.at("flatness"),
+            "flat",
+            "not stated; out-of-flatness opens the joint between the bolts",
+        );
+    }
+    PlateDraft {
+        name: record.text("name").unwrap_or(default_name).to_owned(),
+        material: materials::of_plate(record, own, collector),
+        thickness: record.number("thickness"),
+        outline: outline(record, collector),
+        origin: None,
+        finish: finishes::read(record, collector),
+        bow,
+        record: record.clone(),
+    }
+}
+
+fn outline(record: &Record, collector: &mut Collector) -> Option<Outline> {
+    match (record.has("size"), record.has("diameter")) {
+        (true, false) => Some(Outline::Rectangle {
+            size: record.point("size")?,
+        }),
+        (false, true) => Some(Outline::Disc {
+            radius: record.number("diameter")? / 2.0,
+        }),
+        (true, true) => {
+            collector.report(two_ways(record, ["size", "diameter"]));
+            None
+        }
+        (false, false) => {
+            collector.report(
+                missing(record, "size", "size = [\"80 mm\", \"80 mm\"]")
+                    .help("for example `size = [\"80 mm\", \"80 mm\"]`, or `diameter = \"60 mm\"`"),
+            );
+            None
+        }
+    }
+}
+
+/// Two keys that say the same thing.
+pub(super) fn two_ways(record: &Record, keys: [&str; 2]) -> crate::diagnostic::Fault {
+    fault(
+        "file/conflict",
+        &record.span(keys[1]),
+        format!("`{}` and `{}` are both stated", keys[0], keys[1]),
+    )
+    .expecting("expected one of the two")
+}
+
+fn misplaced(record: &Record, keys: &[&str], owner: &str, collector: &mut Collector) {
+    for key in keys.iter().filter(|key| record.has(key)) {
+        collector.report(
+            fault(
+                "plate/misplaced",
+                &record.span(key),
+                format!("`{key}` belongs to the {owner} plate"),
+            )
+            .expecting(format!("expected in the {owner} [[plate]]"))
+            .help("the warm plate comes first: it is heated, and it lies on the second, which is cooled"),
+        );
+    }
+}
+
+fn origin_of_second(
+    upper: &PlateDraft,
+    lower: &PlateDraft,
+    collector: &mut Collector,
+) -> Option<[f64; 2]> {
+    if let Some(offset) = lower.record.point("offset") {
+        return Some([0.0 - offset[0], 0.0 - offset[1]]);
+    }
+    if lower.record.has("offset") {
+        return None;
+    }
+    let (above, below) = (upper.outline?, lower.outline?);
+    if above != below {
+        collector.assume(
+            lower.record.at("offset"),
+            "centred",
+            "the plates differ in outline and no offset is stated",
+        );
+    }
+    let (centre, own) = (above.centre(), below.centre());
+    Some([centre[0] - own[0], centre[1] - own[1]])
+}
+
+/// Reads where heat enters the first plate.
+pub(super) fn source(upper: &PlateDraft, collector: &mut Collector) -> Option<Source> {
+    let record = match upper.record.record("heated") {
+        Some(record) => record,
+        None if upper.record.has("heated") => return None,
+        None => {
+            collector.assume(
+                upper.record.at("heated"),
+                "uniform flux on the whole outer face",
+                "not stated",
+            );
+            return Some(Source {
+                zone: Zone::Face,
+                isothermal: false,
+            });
+        }
+    };
+    let zone = zone(record, upper, collector)?;
+    let outline = upper.outline?;
+    collector.require(holds_zone(outline, zone), || {
+        fault(
+            "zone/outside",
+            &record.place,
+            format!("the heated zone reaches beyond plate `{}`", upper.name),
+        )
+        .expecting("expected inside the plate")
+        .help(
+            "`centre` is measured from the lower left corner of the plate (round: from its centre)",
+        )
+    });
+    Some(Source {
+        zone,
+        isothermal: record.text("face") == Some("isothermal"),
+    })
+}
+
+fn zone(record: &Record, upper: &PlateDraft, collector: &mut Collector) -> Option<Zone> {
+    let centre = || match record.point("centre") {
+        Some(centre) => Some(centre),
+        None if record.has("centre") => None,
+        None => Some(upper.outline?.centre()),
+    };
+    match (record.has("size"), record.has("diameter")) {
+        (true, true) => {
+            collector.report(two_ways(record, ["size", "diameter"]));
+            None
+        }
+        (true, false) => Some(Zone::Rectangle {
+            size: record.point("size")?,
+            centre: centre()?,
+        }),
+        (false, true) => Some(Zone::Disc {
+            radius: record.number("diameter")? / 2.0,
+            centre: centre()?,
+        }),
+        (false, false) if record.has("centre") => {
+            collector.report(missing(record, "size", "size = [\"60 mm\", \"60 mm\"]"));
+            None
+        }
+        (false, false) => Some(Zone::Face),
+    }
+}
+
+/// Reads where heat leaves the second plate.
+pub(super) fn sink(lower: &PlateDraft, collector: &mut Collector) -> Option<Sink> {
+    let record = match lower.record.record("cooled") {
+        Some(record) => record,
+        None if lower.record.has("cooled") => return None,
+        None => {
+            collector.assume(
+                lower.record.at("cooled"),
+                "the whole back at one temperature",
+                "not stated; a film or an edge changes what the joint adds",
+            );
+            return Some(Sink::IsothermalBack);
+        }
+    };
+    let stated: Vec<&str> = ["film", "temperature", "face", "edge"]
+        .into_iter()
+        .filter(|key| record.has(key))
+        .collect();
+    match stated.as_slice() {
+        ["film"] => record.number("film").map(Sink::Film),
+        ["temperature" | "face"] | ["temperature", "face"] => Some(Sink::IsothermalBack),
+        ["edge"] | ["temperature", "edge"] => {
+            let round = matches!(lower.outline?, Outline::Disc { .. });
+            collector.require(round, || {
+                fault(
+                    "plate/not-round",
+                    &record.span("edge"),
+                    format!("plate `{}` has no rim: it is not round", lower.name),
+                )
+                .expecting("expected a plate with a `diameter`")
+                .help("cool the back: `cooled = { film = \"500 W/(m²·K)\" }`")
+            });
+            Some(Sink::Rim)
+        }
+        [] => {
+            collector.report(missing(record, "film", "film = \"500 W/(m²·K)\""));
+            None
+        }
+        [first, .., last] => {
+            collector.report(two_ways(record, [first, last]));
+            None
+        }
+        [_] => None,
+    }
+}

@@ -1,0 +1,375 @@
+//! Where heads, washers and nuts press, and the holes they stand over.
+
+use crate::{
+    catalog::{self, SeatRecord, Status, Thread},
+    joint::{
+        Engagement, Seat,
+        collector::{Collector, Wording, fault},
+        plates::PlateDraft,
+        record::{PerPlate, Record},
+        tree::short,
+        walk::missing,
+    },
+    units::{self, Quantity},
+};
+
+/// Kinds of head.
+pub(super) const HEADS: [&str; 5] = ["hex", "socket", "pan", "button", "countersunk"];
+
+/// A washer spreads the pressure of the head by this multiple of its thickness in diameter
+/// (a rule of the kind VDI 2230 uses, from memory).
+const WASHER_SPREAD: f64 = 1.6;
+
+/// What head and nut press on.
+#[derive(Clone, Copy, Debug)]
+pub(super) struct Seats {
+    /// Seat of the head or its washer.
+    pub head: Seat,
+    /// Seat of the nut or its washer.
+    pub nut: Option<Seat>,
+    /// Mean radius of the annulus that turns, m.
+    pub friction_radius: f64,
+    /// Whether the head is countersunk.
+    pub conical: bool,
+    /// Washers in the grip, m.
+    pub washer_thickness: f64,
+}
+
+/// What the seats depend on.
+#[derive(Clone, Copy, Debug)]
+pub(super) struct Bolt<'a> {
+    /// The fastener's table.
+    pub record: &'a Record,
+    /// Its thread.
+    pub thread: &'a Thread,
+    /// How the far end holds.
+    pub engagement: Engagement,
+    /// Plate on which the head sits.
+    pub head_plate: usize,
+}
+
+/// Reads the hole radius in each plate, m.
+pub(super) fn holes(
+    bolt: Bolt<'_>,
+    plates: &[PlateDraft; 2],
+    collector: &mut Collector,
+) -> Option<[f64; 2]> {
+    let far = 1 - bolt.head_plate;
+    let threaded = !matches!(bolt.engagement, Engagement::Nut);
+    let stated = stated_holes(bolt, plates, collector)?;
+    let mut radii = [0.0; 2];
+    let mut assumed = None;
+    for (plate, radius) in radii.iter_mut().enumerate() {
+        let own = match plates[plate].record.number("hole") {
+            None if plates[plate].record.has("hole") => return None,
+            own => own,
+        };
+        let diameter = match own.or(stated.of(plate)) {
+            Some(diameter) => diameter,
+            // A thread or an insert fills its hole; there is no clearance.
+            None if threaded && plate == far => bolt.thread.diameter,
+            None => *assumed.get_or_insert(medium_hole(bolt, collector)?),
+        };
+        let clear = diameter > bolt.thread.diameter;
+        let fits = clear || (threaded && plate == far && diameter > 0.5 * bolt.thread.diameter);
+        collector.require(fits, || {
+            let place = if own.is_some() {
+                plates[plate].record.span("hole")
+            } else {
+                bolt.record.span("hole")
+            };
+            fault(
+                "plate/hole-too-small",
+                &place,
+                format!(
+                    "{} does not pass a hole of {}",
+                    bolt.thread.name,
+                    units::show(diameter, Quantity::Length)
+                ),
+            )
+            .expecting(format!(
+                "expected above {}",
+                units::show(bolt.thread.diameter, Quantity::Length)
+            ))
+        });
+        if !fits {
+            return None;
+        }
+        *radius = diameter / 2.0;
+    }
+    Some(radii)
+}
+
+/// Hole diameters as the fastener states them.
+#[derive(Clone, Copy, Debug)]
+struct StatedHoles([Option<f64>; 2]);
+
+impl StatedHoles {
+    fn of(self, plate: usize) -> Option<f64> {
+        self.0[plate]
+    }
+}
+
+fn stated_holes(
+    bolt: Bolt<'_>,
+    plates: &[PlateDraft; 2],
+    collector: &mut Collector,
+) -> Option<StatedHoles> {
+    let record = bolt.record;
+    match record.per_plate("hole") {
+        None if record.has("hole") => None,
+        None => Some(StatedHoles([None; 2])),
+        Some(PerPlate::Each([first, last])) => Some(StatedHoles([Some(*first), Some(*last)])),
+        Some(PerPlate::Both(diameter)) => {
+            let mut both = [Some(*diameter); 2];
+            if !matches!(bolt.engagement, Engagement::Nut) {
+                both[1 - bolt.head_plate] = None;
+            }
+            Some(StatedHoles(both))
+        }
+        Some(PerPlate::Named(named)) => {
+            let mut diameters = [None; 2];
+            for (name, span, diameter) in named {
+                let place = plates.iter().position(|plate| plate.name == *name);
+                let Some(place) = place else {
+                    collector.report(unknown_plate(name, span, plates));
+                    return None;
+                };
+                diameters[place] = Some(*diameter);
+            }
+            Some(StatedHoles(diameters))
+        }
+    }
+}
+
+/// A name that no plate has.
+pub(super) fn unknown_plate(
+    name: &str,
+    span: &crate::joint::tree::Span,
+    plates: &[PlateDraft; 2],
+) -> crate::diagnostic::Fault {
+    let names = || plates.iter().map(|plate| plate.name.as_str());
+    fault(
+        "name/unknown",
+        span,
+        format!("no plate is called `{}`", short(name)),
+    )
+    .expecting(format!(
+        "expected {}",
+        crate::joint::fields::listed(&names().collect::<Vec<_>>())
+    ))
+    .nearest(name, names())
+}
+
+fn medium_hole(bolt: Bolt<'_>, collector: &mut Collector) -> Option<f64> {
+    let Some(hole) = catalog::clearance_hole(&bolt.thread.name) else {
+        collector.report(
+            missing(bolt.record, "hole", "hole = \"4.5 mm\"").help(format!(
+                "the catalogue has no clearance hole for {}; state `hole`",
+                bolt.thread.name
+            )),
+        );
+        return None;
+    };
+    let diameter = hole.diameters[1];
+    collector.assume(
+        bolt.record.at("hole"),
+        units::show(diameter, Quantity::Length),
+        format!("medium clearance hole of {}", hole.standard),
+    );
+    Some(diameter)
+}
+
+/// Reads the seats of head and nut over known holes.
+pub(super) fn read(bolt: Bolt<'_>, holes: [f64; 2], collector: &mut Collector) -> Option<Seats> {
+    let record = bolt.record;
+    let head = head(bolt, collector);
+    let bearing = record.number("bearing");
+    if record.has("bearing") && bearing.is_none() {
+        return None;
+    }
+    let head_washer = washer(bolt, "washer", collector)?;
+    let nut_washer = washer(bolt, "nut_washer", collector)?;
+    let near = holes[bolt.head_plate];
+    let conical = head.is_some_and(|head| head.kind == "countersunk") && bearing.is_none();
+    let (head_seat, friction_radius) = match (bearing, head) {
+        (Some(diameter), _) => {
+            let seat = annulus(bolt, [2.0 * near, diameter], collector)?;
+            (seat, mean_radius(seat))
+        }
+        (None, Some(head)) => pressed(bolt, [Some(head), head_washer], near, collector)?,
+        (None, None) => return None,
+    };
+    let far = holes[1 - bolt.head_plate];
+    let nut = match (bolt.engagement, bearing) {
+        (Engagement::Nut, Some(diameter)) => Some(annulus(bolt, [2.0 * far, diameter], collector)?),
+        (Engagement::Nut, None) => {
+            let nut = catalog::seat("nut", &bolt.thread.name);
+            if nut.is_none() {
+                collector.report(no_seat(bolt, "nut"));
+            }
+            Some(pressed(bolt, [Some(nut?), nut_washer], far, collector)?.0)
+        }
+        _ => None,
+    };
+    let thickness = |washer: Option<&SeatRecord>| washer.and_then(|washer| washer.height);
+    Some(Seats {
+        head: head_seat,
+        nut,
+        friction_radius,
+        conical,
+        washer_thickness: thickness(head_washer).unwrap_or(0.0)
+            + thickness(nut_washer).unwrap_or(0.0),
+    })
+}
+
+fn head(bolt: Bolt<'_>, collector: &mut Collector) -> Option<&'static SeatRecord> {
+    let record = bolt.record;
+    let Some(name) = record.text("head") else {
+        if !record.has("head") && !record.has("bearing") {
+            collector.report(missing(record, "head", "head = \"socket\"").help(
+                "for example `head = \"socket\"`, or the seat itself: `bearing = \"8.5 mm\"`",
+            ));
+        }
+        return None;
+    };
+    let known = catalog::seats().iter().any(|seat| {
+        HEADS.contains(&seat.kind.as_str()) && catalog::seat(name, &seat.thread).is_some()
+    });
+    if !known {
+        collector.report(
+            fault(
+                "name/unknown",
+                &record.span("head"),
+                format!("no head is called `{}`", short(name)),
+            )
+            .expecting(format!("expected {}", crate::joint::fields::listed(&HEADS)))
+            .nearest(name, HEADS.into_iter()),
+        );
+        return None;
+    }
+    let seat = catalog::seat(name, &bolt.thread.name);
+    if seat.is_none() && !record.has("bearing") {
+        collector.report(no_seat(bolt, name));
+    }
+    if let Some(seat) = seat
+        && seat.status == Status::Judgement
+        && !record.has("bearing")
+    {
+        collector.assume(
+            record.at("bearing"),
+            units::show(seat.outer, Quantity::Length),
+            format!("{}: {}", seat.standard, seat.source),
+        );
+    }
+    seat
+}
+
+/// A washer: the outer option is none when it is faulty, the inner one when there is none.
+#[expect(clippy::option_option, reason = "faulty and not stated are two things")]
+fn washer(
+    bolt: Bolt<'_>,
+    key: &str,
+    collector: &mut Collector,
+) -> Option<Option<&'static SeatRecord>> {
+    let record = bolt.record;
+    let Some(name) = record.text(key) else {
+        return (!record.has(key)).then_some(None);
+    };
+    if name.eq_ignore_ascii_case("none") {
+        return Some(None);
+    }
+    let found = catalog::seat(name, &bolt.thread.name).filter(|seat| seat.kind == "washer");
+    if found.is_none() {
+        let standards: Vec<&str> = catalog::seats()
+            .iter()
+            .filter(|seat| {
+                seat.kind == "washer"
+                    && catalog::seat("washer", &bolt.thread.name)
+                        .is_some_and(|fits| fits.thread == seat.thread)
+            })
+            .map(|seat| seat.standard.as_str())
+            .collect();
+        collector.report(
+            fault(
+                "name/unknown",
+                &record.span(key),
+                format!("no washer `{}` for {}", short(name), bolt.thread.name),
+            )
+            .expecting("expected the standard of a washer, or `none`")
+            .help(format!("known for this thread: {}", standards.join(", ")))
+            .nearest(name, standards.iter().copied()),
+        );
+        return None;
+    }
+    Some(found)
+}
+
+/// Seat on the plate and friction radius of a head or nut that may stand on a washer.
+fn pressed(
+    bolt: Bolt<'_>,
+    [part, washer]: [Option<&SeatRecord>; 2],
+    hole_radius: f64,
+    collector: &mut Collector,
+) -> Option<(Seat, f64)> {
+    let part = part?;
+    let Some(washer) = washer else {
+        let inner = part.inner.unwrap_or(0.0).max(2.0 * hole_radius);
+        let seat = annulus(bolt, [inner, part.outer], collector)?;
+        return Some((seat, mean_radius(seat)));
+    };
+    let washer_hole = washer.inner.unwrap_or(bolt.thread.diameter);
+    let turned = annulus(
+        bolt,
+        [part.inner.unwrap_or(0.0).max(washer_hole), part.outer],
+        collector,
+    )?;
+    let spread = part.outer + WASHER_SPREAD * washer.height.unwrap_or(0.0);
+    let outer = washer.outer.min(spread);
+    let seat = annulus(bolt, [washer_hole.max(2.0 * hole_radius), outer], collector)?;
+    Some((seat, mean_radius(turned)))
+}
+
+/// An annulus of inner and outer diameter, m, unless nothing of it is left.
+fn annulus(bolt: Bolt<'_>, [inner, outer]: [f64; 2], collector: &mut Collector) -> Option<Seat> {
+    if inner < outer {
+        return Some(Seat {
+            inner_radius: inner / 2.0,
+            outer_radius: outer / 2.0,
+        });
+    }
+    let key = ["bearing", "hole", "head"]
+        .into_iter()
+        .find(|key| bolt.record.has(key));
+    collector.report(
+        fault(
+            "fastener/no-seat",
+            &bolt.record.span(key.unwrap_or("thread")),
+            format!(
+                "a seat of {} finds no land around an opening of {}",
+                units::show(outer, Quantity::Length),
+                units::show(inner, Quantity::Length)
+            ),
+        )
+        .expecting("nothing is left to press on")
+        .help("a smaller hole, a larger head, or a washer with `bearing` stated"),
+    );
+    None
+}
+
+fn mean_radius(seat: Seat) -> f64 {
+    f64::midpoint(seat.inner_radius, seat.outer_radius)
+}
+
+fn no_seat(bolt: Bolt<'_>, part: &str) -> crate::diagnostic::Fault {
+    fault(
+        "fastener/no-seat",
+        &bolt.record.span("thread"),
+        format!(
+            "the catalogue has no `{part}` seat for {}",
+            bolt.thread.name
+        ),
+    )
+    .expecting("expected `bearing` for this thread")
+    .help("state the outer diameter of the seat: `bearing = \"8.5 mm\"`")
+}

@@ -1,0 +1,308 @@
+//! The fields of the joint file, part by part: the file itself, service, contact, measured, losses.
+
+mod fasteners;
+mod filler;
+mod plates;
+
+use crate::{
+    joint::fields::{Catalogue, Field, Kind, Measure, Section, field},
+    units::Quantity,
+};
+
+pub use fasteners::{ENGAGEMENT, FASTENER, FRICTION, PATTERN, TORQUE};
+pub use filler::{FILLER, MEASURED, MEASURED_LAW};
+pub use plates::{
+    BOW, COOLED, FINISH, HEATED, MATERIAL, MATERIAL_INLINE, MICROHARDNESS, PLATE, PLATING,
+};
+
+/// The newest format this version reads.
+pub const FORMAT: usize = 1;
+
+/// The joint file.
+pub static FILE: Section = Section {
+    name: "",
+    meaning: "a bolted joint of two plates",
+    shorthand: None,
+    fields: &[
+        field(
+            "format",
+            Kind::Count,
+            "version of the file format",
+            "1",
+        )
+        .default("1"),
+        field(
+            "title",
+            Kind::Text,
+            "title, as reports print it",
+            "\"Converter box on shear panel\"",
+        )
+        .default("Bolted joint"),
+        field(
+            "service",
+            Kind::Table(&SERVICE),
+            "medium, temperatures, heat and what is required",
+            "{ medium = \"vacuum\", temperature = \"20 °C\", heat = \"22 W\" }",
+        )
+        .required(),
+        field(
+            "material",
+            Kind::List(&MATERIAL),
+            "a material of your own, or a catalogue material with changes",
+            "[{ name = \"my plate\", like = \"Al 6061-T6\", conductivity = \"160 W/(m·K)\" }]",
+        ),
+        field(
+            "plate",
+            Kind::List(&PLATE),
+            "the two plates, warm side first",
+            "[{ material = \"Al 6061-T6\", thickness = \"5 mm\", size = [\"80 mm\", \"80 mm\"], finish = \"milled\" }]",
+        )
+        .required(),
+        field(
+            "contact",
+            Kind::Table(&CONTACT),
+            "how the faces touch",
+            "{ law = \"elastic-plastic\" }",
+        ),
+        field(
+            "fastener",
+            Kind::List(&FASTENER),
+            "the bolts; one table for each group of like bolts",
+            "[{ thread = \"M4\", grade = \"A2-70\", head = \"socket\", torque = \"1.7 N·m\", at = [[\"40 mm\", \"40 mm\"]] }]",
+        )
+        .required(),
+        field(
+            "filler",
+            Kind::Table(&FILLER),
+            "paste, film, pad or foil between the plates",
+            "{ name = \"graphite foil\" }",
+        )
+        .default("none: bare faces"),
+        field(
+            "measured",
+            Kind::Table(&MEASURED),
+            "your own measurements of the contact, which override the laws",
+            "{ points = [[\"1 MPa\", \"5000 W/(m²·K)\"], [\"10 MPa\", \"40000 W/(m²·K)\"]] }",
+        ),
+        field(
+            "losses",
+            Kind::Table(&LOSSES),
+            "losses of clamp force that the nominal result shall carry",
+            "{ settling = \"guide\", relaxation = \"5 %\" }",
+        )
+        .default("none in the nominal force"),
+    ],
+};
+
+/// `[service]`.
+pub static SERVICE: Section = Section {
+    name: "service",
+    meaning: "medium, temperatures, heat and what is required",
+    shorthand: None,
+    fields: &[
+        field(
+            "medium",
+            Kind::Name(Catalogue::Medium),
+            "what surrounds the joint",
+            "\"vacuum\"",
+        )
+        .required(),
+        field(
+            "pressure",
+            Kind::Quantity(Quantity::Pressure),
+            "absolute pressure of the gas",
+            "\"101325 Pa\"",
+        )
+        .within(1e-9, 1e8)
+        .default("101 325 Pa"),
+        field(
+            "temperature",
+            Kind::Table(&TEMPERATURE),
+            "mean temperature of the sink surface, or the cases hot and cold",
+            "\"20 °C\"",
+        )
+        .default("20 °C"),
+        field(
+            "heat",
+            Kind::Quantity(Quantity::Power),
+            "heat through the joint",
+            "\"22 W\"",
+        )
+        .within(1e-12, 1e7),
+        field(
+            "require",
+            Kind::Table(&REQUIRE),
+            "the limit the joint must meet",
+            "{ rise = \"5 K\" }",
+        ),
+    ],
+};
+
+/// `[service.temperature]`.
+pub static TEMPERATURE: Section = Section {
+    name: "temperature",
+    meaning: "mean temperature of the sink surface",
+    shorthand: Some("sink"),
+    fields: &[
+        temperature("sink", "mean temperature of the sink surface", "\"20 °C\""),
+        temperature("hot", "the same in the hot case", "\"50 °C\""),
+        temperature("cold", "the same in the cold case", "\"-20 °C\""),
+        temperature(
+            "assembly",
+            "temperature at which the bolts were tightened",
+            "\"20 °C\"",
+        )
+        .default("20 °C"),
+    ],
+};
+
+const fn temperature(key: &'static str, meaning: &'static str, example: &'static str) -> Field {
+    field(key, Kind::Quantity(Quantity::Temperature), meaning, example).within(0.01, 2000.0)
+}
+
+/// Words of `of` for a rise; the first is the default.
+pub const RISES: [&str; 3] = ["mean", "hottest", "interface"];
+/// Words of `of` for a resistance or conductance; the last is the default.
+pub const PLANES: [&str; 4] = [
+    "contact",
+    "node to node",
+    "added by joint",
+    "source to sink",
+];
+
+/// `[service.require]`.
+pub static REQUIRE: Section = Section {
+    name: "require",
+    meaning: "the limit the joint must meet: exactly one of rise, resistance, conductance",
+    shorthand: None,
+    fields: &[
+        field(
+            "rise",
+            Kind::Quantity(Quantity::TemperatureDifference),
+            "limit of the temperature above the mean sink surface",
+            "\"5 K\"",
+        )
+        .within(1e-9, 5000.0),
+        field(
+            "resistance",
+            Kind::Quantity(Quantity::Resistance),
+            "limit of a resistance",
+            "\"0.3 K/W\"",
+        )
+        .within(1e-12, 1e9),
+        field(
+            "conductance",
+            Kind::Quantity(Quantity::Conductance),
+            "limit of a conductance",
+            "\"5 W/K\"",
+        )
+        .within(1e-12, 1e9),
+        field(
+            "of",
+            Kind::Choice(&[
+                "mean",
+                "hottest",
+                "interface",
+                "contact",
+                "node to node",
+                "added by joint",
+                "source to sink",
+            ]),
+            "which rise, or between which planes",
+            "\"hottest\"",
+        )
+        .default("mean for a rise, source to sink otherwise"),
+        field(
+            "bound",
+            Kind::Choice(&["most", "least"]),
+            "the side of the limit on which the value must lie",
+            "\"most\"",
+        )
+        .default("most for rise and resistance, least for conductance"),
+    ],
+};
+
+/// `[contact]`.
+pub static CONTACT: Section = Section {
+    name: "contact",
+    meaning: "how the faces touch",
+    shorthand: None,
+    fields: &[
+        field(
+            "law",
+            Kind::Choice(&["elastic-plastic", "plastic", "elastic", "plastic-power"]),
+            "law of the solid spots",
+            "\"elastic-plastic\"",
+        )
+        .default("elastic-plastic"),
+        field(
+            "cone",
+            Kind::QuantityOr(Quantity::Angle, &["fitted", "vdi"]),
+            "rule for the extent of contact, or a half-angle",
+            "\"fitted\"",
+        )
+        .within(0.017, 1.5)
+        .default("fitted"),
+        field(
+            "shape",
+            Kind::Choice(&["fitted", "uniform", "linear", "polynomial"]),
+            "shape of the pressure between hole and contact edge",
+            "\"linear\"",
+        )
+        .default("fitted for the fitted cone, linear for the others"),
+        field(
+            "head_model",
+            Kind::Choice(&["uniform", "rigid"]),
+            "how the head presses",
+            "\"uniform\"",
+        )
+        .default("uniform"),
+        field(
+            "faces",
+            Kind::Choice(&["frictionless", "stuck"]),
+            "whether the faces slide on each other",
+            "\"frictionless\"",
+        )
+        .default("frictionless"),
+        field(
+            "compliance",
+            Kind::Choice(&["hard", "asperities", "filler"]),
+            "what yields between the faces",
+            "\"hard\"",
+        )
+        .default("hard"),
+        field(
+            "emissivity",
+            Kind::PerPlate(Measure::Number),
+            "hemispherical emissivity of the faces",
+            "0.1",
+        )
+        .within(0.001, 1.0)
+        .default("0.1 for bare metal, 0.8 otherwise"),
+    ],
+};
+
+/// `[losses]`.
+pub static LOSSES: Section = Section {
+    name: "losses",
+    meaning: "losses of clamp force that the nominal result shall carry",
+    shorthand: None,
+    fields: &[
+        field(
+            "settling",
+            Kind::QuantityOr(Quantity::Length, &["guide"]),
+            "sum of settling over all contacts of one bolt",
+            "\"guide\"",
+        )
+        .within(0.0, 1e-3)
+        .default("guide values"),
+        field(
+            "relaxation",
+            Kind::Quantity(Quantity::Ratio),
+            "short-term relaxation of the clamp force",
+            "\"5 %\"",
+        )
+        .within(0.0, 0.9)
+        .default("5 %"),
+    ],
+};

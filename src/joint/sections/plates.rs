@@ -1,0 +1,369 @@
+//! Fields of plates, materials and faces.
+
+use crate::{
+    joint::fields::{Catalogue, Field, Kind, Measure, Section, field},
+    units::Quantity,
+};
+
+const fn length(key: &'static str, meaning: &'static str, example: &'static str) -> Field {
+    field(key, Kind::Quantity(Quantity::Length), meaning, example).within(1e-5, 100.0)
+}
+
+/// `[[plate]]`.
+pub static PLATE: Section = Section {
+    name: "plate",
+    meaning: "one of the two plates, warm side first",
+    shorthand: None,
+    fields: &[
+        field(
+            "name",
+            Kind::Text,
+            "name by which other tables and results call the plate",
+            "\"panel\"",
+        )
+        .default("upper for the first plate, lower for the second"),
+        field(
+            "material",
+            Kind::Table(&MATERIAL_INLINE),
+            "material by name, or a table as in [[material]]",
+            "\"Al 6061-T6\"",
+        )
+        .required(),
+        length("thickness", "thickness", "\"5 mm\"")
+            .within(1e-6, 10.0)
+            .required(),
+        field(
+            "size",
+            Kind::Point,
+            "width and height of a rectangular plate",
+            "[\"160 mm\", \"120 mm\"]",
+        )
+        .within(1e-5, 100.0),
+        length("diameter", "diameter of a round plate", "\"60 mm\""),
+        field(
+            "offset",
+            Kind::Point,
+            "second plate only: where the corner (round: the centre) of the first plate lies on it",
+            "[\"70 mm\", \"90 mm\"]",
+        )
+        .within(-100.0, 100.0)
+        .default("plates centred on each other"),
+        field(
+            "finish",
+            Kind::Table(&FINISH),
+            "the faying face: a process, or a table",
+            "{ roughness = \"Ra 0.8 µm\", flatness = \"0.1 mm\" }",
+        )
+        .required(),
+        field(
+            "emissivity",
+            Kind::Number,
+            "hemispherical emissivity of the faying face",
+            "0.1",
+        )
+        .within(0.001, 1.0)
+        .default("0.1 for bare metal, 0.8 otherwise"),
+        field(
+            "bow",
+            Kind::Table(&BOW),
+            "known bow of the faying face",
+            "{ kind = \"concave\", height = \"30 µm\" }",
+        ),
+        length(
+            "hole",
+            "hole diameter in this plate, where it differs from that of the fastener",
+            "\"4.5 mm\"",
+        ),
+        field(
+            "heated",
+            Kind::Table(&HEATED),
+            "first plate only: where heat enters the outer face",
+            "{ centre = [\"80 mm\", \"60 mm\"], size = [\"60 mm\", \"60 mm\"] }",
+        )
+        .default("uniform flux on the whole outer face"),
+        field(
+            "cooled",
+            Kind::Table(&COOLED),
+            "second plate only: where heat leaves",
+            "{ film = \"500 W/(m²·K)\" }",
+        )
+        .default("the whole back at one temperature"),
+    ],
+};
+
+/// `finish` of a plate.
+pub static FINISH: Section = Section {
+    name: "finish",
+    meaning: "the faying face of a plate",
+    shorthand: Some("process"),
+    fields: &[
+        field(
+            "process",
+            Kind::Name(Catalogue::Finish),
+            "finishing process, from which typical roughness and its range follow",
+            "\"milled\"",
+        ),
+        field(
+            "roughness",
+            Kind::Spread(Measure::Roughness),
+            "roughness of the face, or its range",
+            "\"Ra 0.8 µm\"",
+        )
+        .within(1e-9, 1e-3),
+        field(
+            "slope",
+            Kind::Number,
+            "root-mean-square slope of the asperities",
+            "0.11",
+        )
+        .within(1e-3, 2.0)
+        .default("from the roughness: 0.125 (Rq / 1 µm)^0.402"),
+        length(
+            "flatness",
+            "total out-of-flatness of the face",
+            "\"0.1 mm\"",
+        )
+        .within(0.0, 0.1)
+        .default("flat"),
+        field(
+            "plating",
+            Kind::Table(&PLATING),
+            "plating or film on the face, or \"none\"",
+            "\"none\"",
+        )
+        .default("none"),
+    ],
+};
+
+/// `plating` of a finish.
+pub static PLATING: Section = Section {
+    name: "plating",
+    meaning: "a plating or film",
+    shorthand: Some("name"),
+    fields: &[
+        field(
+            "name",
+            Kind::Name(Catalogue::Plating),
+            "plating or film",
+            "\"silver\"",
+        )
+        .required(),
+        length("thickness", "thickness", "\"5 µm\"")
+            .within(1e-9, 5e-3)
+            .default("typical of the plating"),
+    ],
+};
+
+/// `bow` of a plate.
+pub static BOW: Section = Section {
+    name: "bow",
+    meaning: "a known bow, a paraboloid over the half diagonal (round: the radius)",
+    shorthand: None,
+    fields: &[
+        field(
+            "kind",
+            Kind::Choice(&["concave", "convex"]),
+            "concave is open at the centre when laid on a flat",
+            "\"concave\"",
+        )
+        .required(),
+        length("height", "height of the bow", "\"30 µm\"")
+            .within(0.0, 0.1)
+            .required(),
+    ],
+};
+
+/// `heated` of the first plate.
+pub static HEATED: Section = Section {
+    name: "heated",
+    meaning: "where heat enters the outer face of the first plate",
+    shorthand: None,
+    fields: &[
+        field(
+            "centre",
+            Kind::Point,
+            "centre of the heated zone",
+            "[\"80 mm\", \"60 mm\"]",
+        )
+        .within(-100.0, 100.0)
+        .default("the centre of the plate"),
+        field(
+            "size",
+            Kind::Point,
+            "width and height of the heated zone",
+            "[\"60 mm\", \"60 mm\"]",
+        )
+        .within(1e-5, 100.0),
+        length("diameter", "diameter of a round heated zone", "\"20 mm\""),
+        field(
+            "face",
+            Kind::Choice(&["flux", "isothermal"]),
+            "uniform flux, or one temperature over the zone",
+            "\"isothermal\"",
+        )
+        .default("flux"),
+    ],
+};
+
+/// `cooled` of the second plate.
+pub static COOLED: Section = Section {
+    name: "cooled",
+    meaning: "where heat leaves the second plate: one of film, temperature, face, edge",
+    shorthand: None,
+    fields: &[
+        field(
+            "film",
+            Kind::Quantity(Quantity::FilmCoefficient),
+            "heat transfer coefficient on the whole back",
+            "\"500 W/(m²·K)\"",
+        )
+        .within(1e-3, 1e8),
+        field(
+            "temperature",
+            Kind::Quantity(Quantity::Temperature),
+            "temperature of the whole back",
+            "\"20 °C\"",
+        )
+        .within(0.01, 2000.0),
+        field(
+            "face",
+            Kind::Choice(&["isothermal"]),
+            "the whole back at one temperature",
+            "\"isothermal\"",
+        ),
+        field(
+            "edge",
+            Kind::Choice(&["rim"]),
+            "the rim of a round plate at one temperature, the back insulated",
+            "\"rim\"",
+        ),
+    ],
+};
+
+/// `[[material]]`.
+pub static MATERIAL: Section = Section {
+    name: "material",
+    meaning: "a material of your own, or a catalogue material with changes",
+    shorthand: None,
+    fields: &MATERIAL_FIELDS,
+};
+
+/// `material` of a plate.
+pub static MATERIAL_INLINE: Section = Section {
+    name: "material",
+    meaning: "the material of a plate",
+    shorthand: Some("like"),
+    fields: &MATERIAL_FIELDS,
+};
+
+/// Kinds of material.
+pub const MATERIAL_KINDS: [&str; 4] = ["metal", "brittle", "polymer", "graphite"];
+
+static MATERIAL_FIELDS: [Field; 15] = [
+    field("name", Kind::Text, "name", "\"my plate\""),
+    field(
+        "like",
+        Kind::Name(Catalogue::Material),
+        "material to start from",
+        "\"Al 6061-T6\"",
+    ),
+    field(
+        "kind",
+        Kind::Choice(&MATERIAL_KINDS),
+        "kind of solid",
+        "\"metal\"",
+    )
+    .default("metal"),
+    field(
+        "family",
+        Kind::Text,
+        "family for galvanic pairing",
+        "\"aluminium\"",
+    ),
+    field(
+        "conductivity",
+        Kind::Spread(Measure::Quantity(Quantity::Conductivity)),
+        "thermal conductivity, or its range",
+        "\"167 W/(m·K)\"",
+    )
+    .within(1e-3, 1e5),
+    field(
+        "youngs_modulus",
+        Kind::Quantity(Quantity::Pressure),
+        "Young's modulus",
+        "\"69 GPa\"",
+    )
+    .within(1e5, 2e12),
+    field("poisson", Kind::Number, "Poisson's ratio", "0.33")
+        .within(0.0, 0.499)
+        .default("0.33"),
+    field(
+        "hardness",
+        Kind::Quantity(Quantity::Pressure),
+        "Meyer hardness: mean pressure over the projected area of an indentation",
+        "\"1200 MPa\"",
+    )
+    .within(1e5, 2e11),
+    field(
+        "microhardness",
+        Kind::Table(&MICROHARDNESS),
+        "Vickers microhardness Hv = c1 (d / 1 µm)^c2, which overrides hardness",
+        "{ c1 = \"6.3 GPa\", c2 = -0.26 }",
+    ),
+    field(
+        "expansion",
+        Kind::Quantity(Quantity::Expansion),
+        "linear thermal expansion",
+        "\"23.6 µm/(m·K)\"",
+    )
+    .within(-1e-4, 1e-2),
+    field(
+        "yield",
+        Kind::Quantity(Quantity::Pressure),
+        "0.2 % yield strength",
+        "\"276 MPa\"",
+    )
+    .within(1e4, 2e10),
+    field(
+        "density",
+        Kind::Quantity(Quantity::Density),
+        "density",
+        "\"2700 kg/m³\"",
+    )
+    .within(1.0, 3e4),
+    field(
+        "bearing_limit",
+        Kind::Quantity(Quantity::Pressure),
+        "permissible pressure under a bolt head",
+        "\"410 MPa\"",
+    )
+    .within(1e4, 2e10),
+    field(
+        "valid_from",
+        Kind::Quantity(Quantity::Temperature),
+        "lowest temperature at which your conductivity and expansion hold; for the cold",
+        "\"77 K\"",
+    )
+    .within(0.01, 293.0),
+    field("note", Kind::Text, "remark", "\"certificate 1234\""),
+];
+
+/// `microhardness` of a material.
+pub static MICROHARDNESS: Section = Section {
+    name: "microhardness",
+    meaning: "Vickers microhardness Hv = c1 (d / 1 µm)^c2",
+    shorthand: None,
+    fields: &[
+        field(
+            "c1",
+            Kind::Quantity(Quantity::Pressure),
+            "hardness at an indentation of 1 µm",
+            "\"6.3 GPa\"",
+        )
+        .within(1e6, 2e11)
+        .required(),
+        field("c2", Kind::Number, "exponent of the size", "-0.26")
+            .within(-1.0, 0.5)
+            .required(),
+    ],
+};

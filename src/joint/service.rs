@@ -1,0 +1,229 @@
+//! Medium, temperatures, heat, requirement.
+
+use crate::{
+    catalog,
+    joint::{
+        Case, Limit, Medium, Plane, Requirement, RequirementKind, Service,
+        collector::{Collector, Wording, fault},
+        plates::two_ways,
+        record::Record,
+        sections::{PLANES, RISES},
+        tree::short,
+        walk::missing,
+    },
+};
+
+/// 20 °C, K.
+const ROOM: f64 = 293.15;
+
+/// Standard atmosphere, Pa.
+const ATMOSPHERE: f64 = 101_325.0;
+
+/// Reads `[service]`. `sink` is the table `cooled` of the second plate, which may state the
+/// temperature in its place.
+pub(super) fn read(
+    file: &Record,
+    cooled: Option<&Record>,
+    collector: &mut Collector,
+) -> Option<Service> {
+    let record = file.record("service")?;
+    let medium = medium(record, collector);
+    let temperatures = temperatures(record, cooled, collector);
+    let require = require(record, collector);
+    let (cases, assembly_temperature) = temperatures?;
+    Some(Service {
+        medium: medium?,
+        cases,
+        assembly_temperature,
+        heat: record.number("heat"),
+        require: require?,
+    })
+}
+
+fn medium(record: &Record, collector: &mut Collector) -> Option<Medium> {
+    let name = record.text("medium")?;
+    if name.eq_ignore_ascii_case("vacuum") {
+        collector.require(!record.has("pressure"), || {
+            fault(
+                "file/conflict",
+                &record.span("pressure"),
+                "a vacuum has no gas pressure: it is calculated with no gas at all",
+            )
+            .expecting("expected without `pressure`")
+            .help("leave `pressure` out, or name the gas that is left: `medium = \"air\"`")
+        });
+        return Some(Medium::Vacuum);
+    }
+    let Some(gas) = catalog::gas(name) else {
+        let known = catalog::gases().iter().map(|gas| gas.name.as_str());
+        let names: Vec<String> = known.clone().map(str::to_lowercase).collect();
+        collector.report(
+            fault(
+                "name/unknown",
+                &record.span("medium"),
+                format!("no medium is called `{}`", short(name)),
+            )
+            .expecting("expected `vacuum` or a gas")
+            .help(format!("known are vacuum, {}", names.join(", ")))
+            .nearest(name, known.chain(std::iter::once("vacuum"))),
+        );
+        return None;
+    };
+    let pressure = match record.number("pressure") {
+        Some(pressure) => pressure,
+        None => {
+            if !record.has("pressure") {
+                collector.assume(record.at("pressure"), "101 325 Pa", "not stated");
+            }
+            ATMOSPHERE
+        }
+    };
+    Some(Medium::Gas {
+        gas: gas.clone(),
+        pressure,
+    })
+}
+
+fn temperatures(
+    record: &Record,
+    cooled: Option<&Record>,
+    collector: &mut Collector,
+) -> Option<(Vec<Case>, f64)> {
+    let absent = Record::absent(&record.at("temperature"), &record.place);
+    let table = match record.record("temperature") {
+        Some(table) => table,
+        None if record.has("temperature") => return None,
+        None => &absent,
+    };
+    let assembly = match table.number("assembly") {
+        Some(assembly) => assembly,
+        None if table.has("assembly") => return None,
+        None => {
+            collector.assume(table.at("assembly"), "20 °C", "not stated");
+            ROOM
+        }
+    };
+    let back = cooled.filter(|cooled| cooled.has("temperature"));
+    for key in ["hot", "cold"] {
+        if table.has("sink") && table.has(key) {
+            collector.report(two_ways(table, ["sink", key]));
+            return None;
+        }
+    }
+    let mut cases = Vec::new();
+    for (key, name) in [("sink", "service"), ("hot", "hot"), ("cold", "cold")] {
+        if table.has(key) {
+            cases.push(Case {
+                name,
+                temperature: table.number(key)?,
+            });
+        }
+    }
+    if let Some(back) = back {
+        let temperature = back.number("temperature")?;
+        let agrees = cases
+            .iter()
+            .all(|case| (case.temperature - temperature).abs() < 1e-6);
+        collector.require(agrees, || {
+            fault(
+                "file/conflict",
+                &back.span("temperature"),
+                "the sink has two temperatures: this one and `service.temperature`",
+            )
+            .expecting("expected one of the two")
+        });
+        if cases.is_empty() {
+            cases.push(Case {
+                name: "service",
+                temperature,
+            });
+        }
+    }
+    if cases.is_empty() {
+        collector.assume(table.at("sink"), "20 °C", "not stated");
+        cases.push(Case {
+            name: "service",
+            temperature: ROOM,
+        });
+    }
+    if let [hot, cold] = cases.as_slice() {
+        collector.require(cold.temperature <= hot.temperature, || {
+            fault(
+                "value/min-above-max",
+                &table.span("cold"),
+                "the cold case is warmer than the hot case",
+            )
+            .expecting("expected below `hot`")
+        });
+    }
+    Some((cases, assembly))
+}
+
+/// The requirement: the outer option is none when it is faulty.
+#[expect(clippy::option_option, reason = "faulty and not stated are two things")]
+fn require(record: &Record, collector: &mut Collector) -> Option<Option<Requirement>> {
+    if !record.has("require") {
+        return Some(None);
+    }
+    let table = record.record("require")?;
+    let stated: Vec<&str> = ["rise", "resistance", "conductance"]
+        .into_iter()
+        .filter(|key| table.has(key))
+        .collect();
+    let key = match stated.as_slice() {
+        [key] => *key,
+        [] => {
+            collector.report(missing(table, "rise", "rise = \"5 K\""));
+            return None;
+        }
+        [first, second, ..] => {
+            collector.report(two_ways(table, [first, second]));
+            return None;
+        }
+    };
+    if key == "rise" && !record.has("heat") {
+        collector.report(missing(record, "heat", "heat = \"22 W\"").help(
+            "a limit of the rise needs the heat: `heat = \"22 W\"`; without heat require a resistance",
+        ));
+    }
+    let of = match (table.text("of"), key) {
+        (Some(of), _) => of,
+        (None, _) if table.has("of") => return None,
+        (None, "rise") => "mean",
+        (None, _) => "source to sink",
+    };
+    let words: &[&str] = if key == "rise" { &RISES } else { &PLANES };
+    if !words.contains(&of) {
+        collector.report(
+            fault(
+                "file/conflict",
+                &table.span("of"),
+                format!("`{key}` has no `{of}`"),
+            )
+            .expecting(format!("expected {}", crate::joint::fields::listed(words))),
+        );
+        return None;
+    }
+    let plane = match of {
+        "contact" => Plane::Contact,
+        "node to node" => Plane::NodeToNode,
+        "added by joint" => Plane::AddedByJoint,
+        _ => Plane::SourceToSink,
+    };
+    let kind = match (key, of) {
+        ("rise", "hottest") => RequirementKind::HottestRise,
+        ("rise", "interface") => RequirementKind::InterfaceDrop,
+        ("rise", _) => RequirementKind::Rise,
+        ("resistance", _) => RequirementKind::Resistance(plane),
+        _ => RequirementKind::Conductance(plane),
+    };
+    let bound = match (table.text("bound"), key) {
+        (Some("least"), _) | (None, "conductance") => Limit::Least,
+        _ => Limit::Most,
+    };
+    Some(Some(Requirement {
+        kind,
+        limit: table.number(key)?,
+        bound,
+    }))
+}

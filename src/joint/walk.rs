@@ -1,0 +1,367 @@
+//! Reads a tree by the description of its fields: structure, types, units, ranges.
+
+mod scalars;
+
+use std::ops::RangeInclusive;
+
+use crate::{
+    diagnostic::Fault,
+    joint::{
+        MOST_PLACES,
+        collector::{Collector, Wording, fault},
+        fields::{Field, Kind, Measure, Need, SPREAD_KEYS, Section, listed},
+        record::{Entry, PerPlate, Point, Record, Value},
+        tree::{Form, Key, Node, Span, short},
+    },
+};
+
+/// Reads the whole file.
+pub(super) fn file(node: &Node, section: &'static Section, collector: &mut Collector) -> Record {
+    Walk { collector }
+        .record(node, section, String::new())
+        .unwrap_or_else(|| Record::absent("", &node.span))
+}
+
+/// The walk down the tree.
+struct Walk<'c> {
+    collector: &'c mut Collector,
+}
+
+/// A field with its value: what every reading of a value needs.
+#[derive(Clone, Copy)]
+struct Stated<'n> {
+    field: &'static Field,
+    node: &'n Node,
+    path: &'n str,
+}
+
+impl Walk<'_> {
+    fn record(&mut self, node: &Node, section: &'static Section, path: String) -> Option<Record> {
+        let Form::Table(entries) = &node.form else {
+            return self.short_record(node, section, path);
+        };
+        let mut record = Record::absent(&path, &node.span);
+        for (key, value) in entries {
+            let Some(field) = section.field(&key.name) else {
+                self.unknown(key, section);
+                continue;
+            };
+            let path = record.at(field.key);
+            let value_read = self.value(Stated {
+                field,
+                node: value,
+                path: &path,
+            });
+            record.entries.push(Entry {
+                field,
+                span: value.span.clone(),
+                value: value_read,
+            });
+        }
+        for field in section.fields {
+            if field.need == Need::Required && !record.has(field.key) {
+                self.collector
+                    .report(missing(&record, field.key, &field.line()));
+            }
+        }
+        Some(record)
+    }
+
+    /// A plain value in place of a table stands for the table's shorthand key.
+    fn short_record(
+        &mut self,
+        node: &Node,
+        section: &'static Section,
+        path: String,
+    ) -> Option<Record> {
+        let field = section.shorthand.and_then(|key| section.field(key));
+        let Some(field) = field else {
+            let example = section.fields.first().map_or_else(String::new, Field::line);
+            self.collector.report(
+                wrong_type(node, &format!("`{}`", section.name), "a table")
+                    .help(format!("write it as a table, `{{ {example}, … }}`")),
+            );
+            return None;
+        };
+        let mut record = Record::absent(&path, &node.span);
+        let value = self.value(Stated {
+            field,
+            node,
+            path: &path,
+        })?;
+        record.entries.push(Entry {
+            field,
+            span: node.span.clone(),
+            value: Some(value),
+        });
+        Some(record)
+    }
+
+    fn value(&mut self, stated: Stated<'_>) -> Option<Value> {
+        match stated.field.kind {
+            Kind::Text | Kind::Name(_) => self.text(stated).map(Value::Text),
+            Kind::Choice(words) => self.choice(stated, words).map(Value::Text),
+            Kind::Flag => self.flag(stated).map(Value::Flag),
+            Kind::Number => self.single(stated, Measure::Number).map(Value::Number),
+            Kind::Quantity(quantity) => self
+                .single(stated, Measure::Quantity(quantity))
+                .map(Value::Number),
+            Kind::QuantityOr(quantity, words) => match &stated.node.form {
+                Form::Text(text) if !text.trim_start().starts_with(starts_a_number) => {
+                    self.choice(stated, words).map(Value::Text)
+                }
+                _ => self
+                    .single(stated, Measure::Quantity(quantity))
+                    .map(Value::Number),
+            },
+            Kind::Spread(measure) => self.spread(stated, measure).map(Value::Spread),
+            Kind::SpreadOr(_) => match &stated.node.form {
+                Form::Text(text) => Some(Value::Text(text.clone())),
+                _ => self.spread(stated, Measure::Number).map(Value::Spread),
+            },
+            Kind::PerPlate(measure) => self.per_plate(stated, measure).map(Value::PerPlate),
+            Kind::Point => self.point(stated).map(Value::Point),
+            Kind::Points => self.points(stated).map(Value::Points),
+            Kind::Pairs(quantities) => {
+                let [first, second] = quantities;
+                self.pairs(
+                    stated,
+                    [Measure::Quantity(first), Measure::Quantity(second)],
+                )
+                .map(Value::Pairs)
+            }
+            Kind::Count => self.counts(stated).map(Value::Count),
+            Kind::Table(section) => self
+                .record(stated.node, section, stated.path.to_owned())
+                .map(Value::Record),
+            Kind::List(section) => self.records(stated, section).map(Value::Records),
+        }
+    }
+
+    fn records(&mut self, stated: Stated<'_>, section: &'static Section) -> Option<Vec<Record>> {
+        let nodes = match &stated.node.form {
+            Form::List(nodes) => nodes.as_slice(),
+            Form::Table(_) => std::slice::from_ref(stated.node),
+            _ => {
+                self.collector.report(
+                    wrong_type(stated.node, &format!("`{}`", section.name), "a table")
+                        .help(format!("head it with `[[{}]]`", section.name)),
+                );
+                return None;
+            }
+        };
+        if !self.few_enough(stated, nodes.len()) {
+            return None;
+        }
+        let mut records = Vec::with_capacity(nodes.len());
+        for (index, node) in nodes.iter().enumerate() {
+            let path = match node.text_of("name") {
+                Some(name) => format!("{}.{name}", section.name),
+                None if nodes.len() == 1 => section.name.to_owned(),
+                None => format!("{}[{}]", section.name, index + 1),
+            };
+            if matches!(node.form, Form::Table(_)) {
+                records.extend(self.record(node, section, path));
+            } else {
+                self.collector
+                    .report(wrong_type(node, &format!("`{}`", section.name), "a table"));
+            }
+        }
+        (records.len() == nodes.len()).then_some(records)
+    }
+
+    fn per_plate(&mut self, stated: Stated<'_>, measure: Measure) -> Option<PerPlate> {
+        match &stated.node.form {
+            Form::List(nodes) => self.two(stated, nodes, [measure; 2]).map(PerPlate::Each),
+            Form::Table(entries) => {
+                let mut named = Vec::with_capacity(entries.len());
+                for (key, node) in entries {
+                    let value = self.single(Stated { node, ..stated }, measure)?;
+                    named.push((key.name.clone(), key.span.clone(), value));
+                }
+                Some(PerPlate::Named(named))
+            }
+            _ => self.single(stated, measure).map(PerPlate::Both),
+        }
+    }
+
+    fn point(&mut self, stated: Stated<'_>) -> Option<Point> {
+        let length = Measure::Quantity(crate::units::Quantity::Length);
+        match &stated.node.form {
+            Form::List(nodes) => self.two(stated, nodes, [length; 2]),
+            _ => {
+                self.wrong(stated);
+                None
+            }
+        }
+    }
+
+    fn points(&mut self, stated: Stated<'_>) -> Option<Vec<(Point, Span)>> {
+        let length = Measure::Quantity(crate::units::Quantity::Length);
+        // A single place may stand without its outer brackets.
+        if let Form::List(nodes) = &stated.node.form
+            && let [first, _] = nodes.as_slice()
+            && matches!(first.form, Form::Text(_))
+        {
+            let point = self.two(stated, nodes, [length; 2])?;
+            return Some(vec![(point, stated.node.span.clone())]);
+        }
+        self.pairs(stated, [length; 2])
+    }
+
+    fn pairs(&mut self, stated: Stated<'_>, measures: [Measure; 2]) -> Option<Vec<(Point, Span)>> {
+        let Form::List(nodes) = &stated.node.form else {
+            self.wrong(stated);
+            return None;
+        };
+        if !self.few_enough(stated, nodes.len()) {
+            return None;
+        }
+        let mut pairs = Vec::with_capacity(nodes.len());
+        for node in nodes {
+            let item = Stated { node, ..stated };
+            if let Form::List(parts) = &node.form {
+                pairs.extend(
+                    self.two(item, parts, measures)
+                        .map(|pair| (pair, node.span.clone())),
+                );
+            } else {
+                self.wrong(item);
+            }
+        }
+        (pairs.len() == nodes.len()).then_some(pairs)
+    }
+
+    fn two(&mut self, stated: Stated<'_>, nodes: &[Node], measures: [Measure; 2]) -> Option<Point> {
+        let [first, second] = nodes else {
+            self.collector.report(
+                fault(
+                    "file/wrong-type",
+                    &stated.node.span,
+                    format!(
+                        "`{}` has {} values here; it takes two",
+                        stated.field.key,
+                        nodes.len()
+                    ),
+                )
+                .expecting("two values")
+                .help(format!("for example `{}`", stated.field.line())),
+            );
+            return None;
+        };
+        let first = self.single(
+            Stated {
+                node: first,
+                ..stated
+            },
+            measures[0],
+        );
+        let second = self.single(
+            Stated {
+                node: second,
+                ..stated
+            },
+            measures[1],
+        );
+        Some([first?, second?])
+    }
+
+    fn few_enough(&mut self, stated: Stated<'_>, count: usize) -> bool {
+        if count > MOST_PLACES {
+            self.collector
+                .report(too_many(stated.field.key, &stated.node.span, count));
+        }
+        count <= MOST_PLACES
+    }
+
+    fn unknown(&mut self, key: &Key, section: &Section) {
+        let elsewhere = home(&key.name, section);
+        let known = fault(
+            "file/unknown-key",
+            &key.span,
+            format!("unknown key `{}`", short(&key.name)),
+        )
+        .expecting("not a key of this table");
+        let told = known.nearest(&key.name, section.keys());
+        let told = match (&told.help, elsewhere) {
+            (None, Some(place)) => told.help(format!("`{}` belongs in {place}", key.name)),
+            (None, None) => told.help(format!(
+                "it takes {}",
+                listed(&section.keys().collect::<Vec<_>>())
+            )),
+            (Some(_), _) => told,
+        };
+        self.collector.report(told);
+    }
+
+    fn wrong(&mut self, stated: Stated<'_>) {
+        self.collector.report(
+            wrong_type(
+                stated.node,
+                &format!("`{}`", stated.field.key),
+                &stated.field.kind.expects(),
+            )
+            .help(format!("for example `{}`", stated.field.line())),
+        );
+    }
+}
+
+/// A required key that a table does not state.
+pub(super) fn missing(record: &Record, key: &str, line: &str) -> Fault {
+    let table = if record.path.is_empty() {
+        "the file".to_owned()
+    } else {
+        format!("`{}`", record.path)
+    };
+    fault(
+        "file/missing-key",
+        &record.place,
+        format!("{table} has no `{key}`"),
+    )
+    .expecting(format!("`{key}` is missing"))
+    .help(format!("for example `{line}`"))
+}
+
+/// More of something than this version reads.
+pub(super) fn too_many(what: &str, span: &Span, count: usize) -> Fault {
+    fault(
+        "file/too-many",
+        span,
+        format!("`{what}` has {count} entries"),
+    )
+    .expecting(format!("at most {MOST_PLACES}"))
+}
+
+fn wrong_type(node: &Node, what: &str, expected: &str) -> Fault {
+    fault(
+        "file/wrong-type",
+        &node.span,
+        format!("{what} is {}", node.shown()),
+    )
+    .expecting(format!("expected {expected}"))
+}
+
+/// The table of the file to which a misplaced key belongs.
+fn home(key: &str, section: &Section) -> Option<String> {
+    let file = &crate::joint::sections::FILE;
+    if file.field(key).is_some() && !section.name.is_empty() {
+        return Some("the top of the file".into());
+    }
+    file.fields.iter().find_map(|field| match field.kind {
+        Kind::Table(inner) => inner.field(key).map(|_| format!("[{}]", inner.name)),
+        Kind::List(inner) => inner.field(key).map(|_| format!("[[{}]]", inner.name)),
+        _ => None,
+    })
+}
+
+fn starts_a_number(letter: char) -> bool {
+    letter.is_ascii_digit() || matches!(letter, '+' | '-' | '−' | '.' | ',')
+}
+
+fn range(field: &Field) -> RangeInclusive<f64> {
+    field.range[0]..=field.range[1]
+}
+
+fn spread_key(key: &str) -> Option<usize> {
+    SPREAD_KEYS.iter().position(|known| *known == key)
+}

@@ -1,0 +1,325 @@
+//! Single values and spreads of them.
+
+use crate::{
+    joint::{
+        Bounds,
+        collector::{Wording, fault},
+        fields::{Measure, SPREAD_KEYS, listed},
+        record::{Spread, Width},
+        tree::{Form, short},
+        walk::{Stated, Walk, range, spread_key},
+    },
+    units::{self, Quantity, UnitFault},
+};
+
+impl Walk<'_> {
+    pub(super) fn text(&mut self, stated: Stated<'_>) -> Option<String> {
+        match &stated.node.form {
+            Form::Text(text) if !text.trim().is_empty() => Some(text.trim().to_owned()),
+            Form::Text(_) => {
+                self.collector.report(
+                    fault(
+                        "file/wrong-type",
+                        &stated.node.span,
+                        format!("`{}` is empty", stated.field.key),
+                    )
+                    .expecting(format!("expected {}", stated.field.kind.expects()))
+                    .help(format!("for example `{}`", stated.field.line())),
+                );
+                None
+            }
+            Form::Number(text, _) => {
+                let help = format!(
+                    "put it in quotes: `{} = \"{}\"`",
+                    stated.field.key,
+                    short(text)
+                );
+                self.wrong_with(stated, help);
+                None
+            }
+            _ => {
+                self.wrong(stated);
+                None
+            }
+        }
+    }
+
+    pub(super) fn choice(&mut self, stated: Stated<'_>, words: &[&'static str]) -> Option<String> {
+        let text = self.text(stated)?;
+        let plain = plain(&text);
+        let found = words.iter().find(|word| self::plain(word) == plain);
+        if found.is_none() {
+            self.collector.report(
+                fault(
+                    "name/unknown",
+                    &stated.node.span,
+                    format!(
+                        "`{}` is not a {} this file can name",
+                        short(&text),
+                        stated.field.key
+                    ),
+                )
+                .expecting(format!("expected {}", stated.field.kind.expects()))
+                .nearest(&text, words.iter().copied()),
+            );
+        }
+        found.map(|word| (*word).to_owned())
+    }
+
+    pub(super) fn flag(&mut self, stated: Stated<'_>) -> Option<bool> {
+        match &stated.node.form {
+            Form::Flag(flag) => Some(*flag),
+            _ => {
+                self.wrong(stated);
+                None
+            }
+        }
+    }
+
+    pub(super) fn counts(&mut self, stated: Stated<'_>) -> Option<Vec<usize>> {
+        let nodes = match &stated.node.form {
+            Form::List(nodes) if (1..=2).contains(&nodes.len()) => nodes.as_slice(),
+            Form::Number(..) => std::slice::from_ref(stated.node),
+            _ => {
+                self.wrong(stated);
+                return None;
+            }
+        };
+        let mut counts = Vec::with_capacity(nodes.len());
+        for node in nodes {
+            match node.form {
+                Form::Number(_, number)
+                    if number.fract() == 0.0 && (1.0..=1e9).contains(&number) =>
+                {
+                    counts.push(number as usize);
+                }
+                _ => {
+                    self.wrong(Stated { node, ..stated });
+                    return None;
+                }
+            }
+        }
+        Some(counts)
+    }
+
+    /// One value of a measure, within the range of its field.
+    pub(super) fn single(&mut self, stated: Stated<'_>, measure: Measure) -> Option<f64> {
+        let value = match measure {
+            Measure::Number => self.number(stated),
+            Measure::Quantity(quantity) => self
+                .measured(stated, measure)
+                .and_then(|text| self.told(stated, units::parse(text, quantity))),
+            Measure::Roughness => self.roughness(stated),
+        }?;
+        if range(stated.field).contains(&value) {
+            return Some(value);
+        }
+        let written = match &stated.node.form {
+            Form::Text(text) | Form::Number(text, _) => short(text),
+            _ => String::new(),
+        };
+        let [least, greatest] = stated.field.range;
+        self.collector.report(
+            fault(
+                "value/range",
+                &stated.node.span,
+                format!(
+                    "`{}` is `{written}`, beyond what it can be",
+                    stated.field.key
+                ),
+            )
+            .expecting(format!(
+                "from {} to {}",
+                shown(least, measure),
+                shown(greatest, measure)
+            ))
+            .help(format!("for example `{}`", stated.field.line())),
+        );
+        None
+    }
+
+    /// One value, `[low, high]`, `[low, nominal, high]`, or a table of these.
+    pub(super) fn spread(&mut self, stated: Stated<'_>, measure: Measure) -> Option<Spread> {
+        let mut parts = [None; 3];
+        match &stated.node.form {
+            Form::List(nodes) => {
+                let places: &[usize] = match nodes.len() {
+                    2 => &[0, 2],
+                    3 => &[0, 1, 2],
+                    _ => {
+                        self.wrong(stated);
+                        return None;
+                    }
+                };
+                let read: Vec<Option<f64>> = nodes
+                    .iter()
+                    .map(|node| self.single(Stated { node, ..stated }, measure))
+                    .collect();
+                for (place, value) in places.iter().zip(read) {
+                    parts[*place] = Some(value?);
+                }
+            }
+            Form::Table(entries) => {
+                for (key, node) in entries {
+                    let Some(place) = spread_key(&key.name) else {
+                        self.collector.report(
+                            fault(
+                                "file/unknown-key",
+                                &key.span,
+                                format!("unknown key `{}`", short(&key.name)),
+                            )
+                            .expecting(format!("expected {}", listed(&SPREAD_KEYS)))
+                            .nearest(&key.name, SPREAD_KEYS.into_iter()),
+                        );
+                        return None;
+                    };
+                    parts[place] = Some(self.single(Stated { node, ..stated }, measure)?);
+                }
+            }
+            _ => {
+                return self.single(stated, measure).map(|value| Spread {
+                    bounds: Bounds::exact(value),
+                    width: Width::Single,
+                });
+            }
+        }
+        self.bounds(stated, parts)
+    }
+
+    fn bounds(&mut self, stated: Stated<'_>, parts: [Option<f64>; 3]) -> Option<Spread> {
+        let bounds = match parts {
+            [Some(low), Some(nominal), Some(high)] => Bounds { low, nominal, high },
+            [Some(low), None, Some(high)] => Bounds {
+                low,
+                nominal: f64::midpoint(low, high),
+                high,
+            },
+            [None, Some(nominal), None] => {
+                return Some(Spread {
+                    bounds: Bounds::exact(nominal),
+                    width: Width::Single,
+                });
+            }
+            _ => {
+                self.wrong_with(
+                    stated,
+                    "give low and high, with or without nominal".to_owned(),
+                );
+                return None;
+            }
+        };
+        if bounds.low <= bounds.nominal && bounds.nominal <= bounds.high {
+            return Some(Spread {
+                bounds,
+                width: Width::Range,
+            });
+        }
+        self.collector.report(
+            fault(
+                "value/min-above-max",
+                &stated.node.span,
+                format!("the values of `{}` do not rise", stated.field.key),
+            )
+            .expecting("expected low ≤ nominal ≤ high")
+            .help("give the lowest first"),
+        );
+        None
+    }
+
+    fn number(&mut self, stated: Stated<'_>) -> Option<f64> {
+        match &stated.node.form {
+            Form::Number(_, number) => Some(*number),
+            Form::Text(text) if text.trim().parse::<f64>().is_ok() => {
+                let help = format!(
+                    "leave the quotes out: `{} = {}`",
+                    stated.field.key,
+                    text.trim()
+                );
+                self.wrong_with(stated, help);
+                None
+            }
+            _ => {
+                self.wrong(stated);
+                None
+            }
+        }
+    }
+
+    fn roughness(&mut self, stated: Stated<'_>) -> Option<f64> {
+        let text = self.measured(stated, Measure::Roughness)?;
+        let roughness = units::parse_roughness(text);
+        let roughness = self.told(stated, roughness)?;
+        if let Some(assumed) = roughness.assumed {
+            let value = format!("Rq {}", units::show(roughness.rq, Quantity::Length));
+            self.collector.assume(stated.path, value, assumed);
+        }
+        Some(roughness.rq)
+    }
+
+    /// The text of a value that must carry a unit.
+    fn measured<'n>(&mut self, stated: Stated<'n>, measure: Measure) -> Option<&'n str> {
+        let bare = match &stated.node.form {
+            Form::Text(text) if text.trim().parse::<f64>().is_err() => return Some(text),
+            Form::Text(text) | Form::Number(text, _) => text,
+            _ => {
+                self.wrong(stated);
+                return None;
+            }
+        };
+        self.collector.report(
+            fault(
+                "unit/bare-number",
+                &stated.node.span,
+                format!("`{}` of `{}` has no unit", short(bare), stated.field.key),
+            )
+            .expecting(format!("expected {}", measure.expects()))
+            .help(format!(
+                "write the unit, in quotes: `{}`",
+                stated.field.line()
+            )),
+        );
+        None
+    }
+
+    fn told<T>(&mut self, stated: Stated<'_>, parsed: Result<T, UnitFault>) -> Option<T> {
+        match parsed {
+            Ok(value) => Some(value),
+            Err(unit) => {
+                let help = unit
+                    .help
+                    .unwrap_or_else(|| format!("for example `{}`", stated.field.line()));
+                self.collector.report(
+                    fault(unit.code, &stated.node.span, unit.message)
+                        .expecting(format!("expected {}", stated.field.kind.expects()))
+                        .help(help),
+                );
+                None
+            }
+        }
+    }
+
+    fn wrong_with(&mut self, stated: Stated<'_>, help: String) {
+        self.collector.report(
+            super::wrong_type(
+                stated.node,
+                &format!("`{}`", stated.field.key),
+                &stated.field.kind.expects(),
+            )
+            .help(help),
+        );
+    }
+}
+
+/// A word without regard to case and to how its parts are joined.
+fn plain(word: &str) -> String {
+    word.trim().to_lowercase().replace(['-', '_'], " ")
+}
+
+/// A limit of a field, for a label.
+fn shown(value: f64, measure: Measure) -> String {
+    match measure {
+        Measure::Quantity(quantity) => units::show(value, quantity),
+        Measure::Roughness => units::show(value, Quantity::Length),
+        Measure::Number => value.to_string(),
+    }
+}

@@ -1,0 +1,107 @@
+//! Textbook stiffness of bolt and members: frusta of 30°, the fit of Wileman, N/m.
+
+use std::f64::consts::PI;
+
+/// tan 30°, the half-angle of the textbook frusta.
+pub const TAN_30: f64 = 0.577_350_269_189_625_8;
+
+/// A frustum of the textbook pressure cone.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Frustum {
+    /// Smaller diameter D, m.
+    pub diameter: f64,
+    /// Thickness t, m.
+    pub thickness: f64,
+    /// Young's modulus, Pa.
+    pub youngs_modulus: f64,
+}
+
+/// Stiffness of a frustum of 30° half-angle around a bolt, N/m.
+///
+/// ```text
+/// k = 0.5774 π E d / ln[ (1.155 t + D − d)(D + d) / ((1.155 t + D + d)(D − d)) ]
+/// ```
+///
+/// Source: Shigley's Mechanical Engineering Design, chapter 8.
+/// Checked: `frusta_of_shigley_8_22_and_8_24`.
+pub fn frustum_stiffness(frustum: &Frustum, bolt_diameter: f64) -> f64 {
+    let (large, hole) = (frustum.diameter, bolt_diameter);
+    let opened = 2.0 * TAN_30 * frustum.thickness + large;
+    TAN_30 * PI * frustum.youngs_modulus * hole
+        / ((opened - hole) * (large + hole) / ((opened + hole) * (large - hole))).ln()
+}
+
+/// Stiffness of members in series, N/m: 1/k = Σ 1/kᵢ.
+pub fn in_series(stiffnesses: impl IntoIterator<Item = f64>) -> f64 {
+    1.0 / stiffnesses.into_iter().map(f64::recip).sum::<f64>()
+}
+
+/// A fit of member stiffness to finite elements.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct MemberFit {
+    /// Coefficient A, 1.
+    pub scale: f64,
+    /// Coefficient B, 1.
+    pub exponent: f64,
+}
+
+impl MemberFit {
+    /// Steel.
+    pub const STEEL: Self = Self::new(0.78715, 0.62873);
+    /// Grey cast iron.
+    pub const GREY_IRON: Self = Self::new(0.77871, 0.61616);
+    /// Aluminium, from memory.
+    pub const ALUMINIUM: Self = Self::new(0.79670, 0.63816);
+    /// Copper, from memory.
+    pub const COPPER: Self = Self::new(0.79568, 0.63553);
+    /// Any metal, from memory.
+    pub const GENERAL: Self = Self::new(0.78952, 0.62914);
+
+    const fn new(scale: f64, exponent: f64) -> Self {
+        Self { scale, exponent }
+    }
+
+    /// Member stiffness per Young's modulus, k/E = A d exp(B d/l), m.
+    ///
+    /// Valid: one material, washer face 1.5 d.
+    /// Source: Wileman, Choudhury & Green 1991, as printed in Shigley, chapter 8.
+    /// Checked: `member_fit_of_wileman`.
+    pub fn length(&self, bolt: &MemberShape) -> f64 {
+        self.scale * bolt.diameter * (self.exponent * bolt.diameter / bolt.grip).exp()
+    }
+}
+
+/// What the member fit asks of a joint.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct MemberShape {
+    /// Bolt diameter, m.
+    pub diameter: f64,
+    /// Grip, m.
+    pub grip: f64,
+}
+
+/// A bolt as the textbook sees it: plain shank, then thread.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct TextbookBolt {
+    /// Length and area of the shank, m and m².
+    pub shank: [f64; 2],
+    /// Length and area of the thread within the grip, m and m².
+    pub thread: [f64; 2],
+    /// Young's modulus, Pa.
+    pub youngs_modulus: f64,
+}
+
+impl TextbookBolt {
+    /// Stiffness, N/m.
+    ///
+    /// ```text
+    /// k = E / (l_d/A_d + l_t/A_t)
+    /// ```
+    ///
+    /// Source: Shigley's Mechanical Engineering Design, chapter 8.
+    /// Checked: `frusta_of_shigley_8_22_and_8_24`.
+    pub fn stiffness(&self) -> f64 {
+        let [shank, thread] = [self.shank, self.thread].map(|[length, area]| length / area);
+        self.youngs_modulus / (shank + thread)
+    }
+}

@@ -1,0 +1,251 @@
+//! How far bolt and plates give under the clamp force: compliances in m/N, stiffnesses in N/m.
+
+use std::f64::consts::PI;
+
+use crate::catalog::Thread;
+
+/// Form of the bolt head, which adds a length to the bolt.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum HeadForm {
+    /// Hexagon: half a diameter.
+    Hexagon,
+    /// Socket cap: 0.4 diameters.
+    Socket,
+}
+
+/// What holds the far end of the bolt.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum FarEnd {
+    /// A nut of the bolt's own material.
+    Nut,
+    /// A thread in a part of this Young's modulus, Pa.
+    Tapped {
+        /// Young's modulus of the tapped part, Pa.
+        youngs_modulus: f64,
+    },
+}
+
+/// A bolt between its head and its engaged thread.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct BoltShape<'a> {
+    /// Thread.
+    pub thread: &'a Thread,
+    /// Young's modulus, Pa.
+    pub youngs_modulus: f64,
+    /// Plain shank within the grip, m.
+    pub shank: f64,
+    /// Free thread within the grip, m.
+    pub free_thread: f64,
+    /// Head.
+    pub head: HeadForm,
+    /// Far end.
+    pub far: FarEnd,
+}
+
+/// Compliance of a bolt, part by part, m/N.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct BoltCompliance {
+    /// Head.
+    pub head: f64,
+    /// Plain shank.
+    pub shank: f64,
+    /// Free thread.
+    pub free_thread: f64,
+    /// Core of the engaged thread.
+    pub engaged: f64,
+    /// Nut or tapped part.
+    pub far: f64,
+}
+
+impl BoltCompliance {
+    /// Sum of the parts `δ_S`, m/N.
+    pub fn total(&self) -> f64 {
+        self.head + self.shank + self.free_thread + self.engaged + self.far
+    }
+}
+
+/// Compliance of a bolt by the substitute lengths of VDI 2230, m/N.
+///
+/// ```text
+/// δ_S = l_head/(E A_N) + l_shank/(E A_N) + l_thread/(E A₃) + 0.5 d/(E A₃) + far
+/// far = 0.4 d/(E A_N) for a nut, 0.33 d/(E_M A_N) tapped;   l_head = 0.5 d hexagon, 0.4 d socket
+/// A_N = π d²/4,  A₃ = π d₃²/4
+/// ```
+///
+/// Source: VDI 2230-1, substitute lengths from memory.
+/// Checked: `example_a_of_the_resilience_chain`, `example_b_of_the_resilience_chain`.
+pub fn bolt_compliance(bolt: &BoltShape<'_>) -> BoltCompliance {
+    let diameter = bolt.thread.diameter;
+    let nominal = PI / 4.0 * diameter.powi(2);
+    let core = PI / 4.0 * bolt.thread.minor_diameter.powi(2);
+    let modulus = bolt.youngs_modulus;
+    let head = match bolt.head {
+        HeadForm::Hexagon => 0.5,
+        HeadForm::Socket => 0.4,
+    };
+    BoltCompliance {
+        head: head * diameter / (modulus * nominal),
+        shank: bolt.shank / (modulus * nominal),
+        free_thread: bolt.free_thread / (modulus * core),
+        engaged: 0.5 * diameter / (modulus * core),
+        far: match bolt.far {
+            FarEnd::Nut => 0.4 * diameter / (modulus * nominal),
+            FarEnd::Tapped { youngs_modulus } => 0.33 * diameter / (youngs_modulus * nominal),
+        },
+    }
+}
+
+/// Whether the cone opens from both ends or from the head alone.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum ConeKind {
+    /// Through bolt with nut: two cones meet in the middle, w = 1.
+    Through,
+    /// Tapped: one cone to the end of the grip, w = 2.
+    Tapped,
+}
+
+impl ConeKind {
+    fn weight(self) -> f64 {
+        match self {
+            Self::Through => 1.0,
+            Self::Tapped => 2.0,
+        }
+    }
+}
+
+/// The clamped parts as the substitute cone sees them.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Clamped {
+    /// Outer diameter of the seat `d_w`, m.
+    pub seat_diameter: f64,
+    /// Hole diameter `d_h`, m.
+    pub hole_diameter: f64,
+    /// Grip `l_K`, m.
+    pub grip: f64,
+    /// Outer diameter of the parts `D_A`, m; not below the seat.
+    pub outer_diameter: f64,
+    /// Kind of joint.
+    pub kind: ConeKind,
+}
+
+impl Clamped {
+    /// tan φ of the substitute cone, 1.
+    ///
+    /// ```text
+    /// through: 0.362 + 0.032 ln(β/2) + 0.153 ln y
+    /// tapped:  0.348 + 0.013 ln β + 0.193 ln y,    β = l_K/d_w, y = D_A/d_w
+    /// ```
+    ///
+    /// Source: VDI 2230-1, coefficients from memory.
+    pub fn cone_tangent(&self) -> f64 {
+        let slender = self.grip / self.seat_diameter;
+        let wide = (self.outer_diameter / self.seat_diameter).ln();
+        match self.kind {
+            ConeKind::Through => 0.362 + 0.032 * (slender / 2.0).ln() + 0.153 * wide,
+            ConeKind::Tapped => 0.348 + 0.013 * slender.ln() + 0.193 * wide,
+        }
+    }
+
+    /// Axial length over which each cone opens before it meets the outer diameter or the other cone, m.
+    fn cone_length(&self, tangent: f64) -> f64 {
+        let end = self.grip * self.kind.weight() / 2.0;
+        end.min((self.outer_diameter - self.seat_diameter) / (2.0 * tangent))
+    }
+
+    /// Diameter of the cone at a depth below the head, m.
+    fn diameter_at(&self, depth: f64, tangent: f64) -> f64 {
+        let from_seat = match self.kind {
+            ConeKind::Through => depth.min(self.grip - depth),
+            ConeKind::Tapped => depth,
+        };
+        (self.seat_diameter + 2.0 * tangent * from_seat).min(self.outer_diameter)
+    }
+
+    /// Compliance of parts of one material times its Young's modulus, `E δ_P`, 1/m.
+    ///
+    /// ```text
+    /// cone:            2/(w d_h tan φ) ln[(d_w+d_h)(D−d_h) / ((d_w−d_h)(D+d_h))] / π,   D = min(D_A, d_w + w l_K tan φ)
+    /// then the sleeve: 4/(D_A² − d_h²) [ l_K − (D_A − d_w)/(w tan φ) ] / π,   where D_A < d_w + w l_K tan φ
+    /// ```
+    ///
+    /// The tangent is an argument so that other rules can use the same body. Divide by E for `δ_P`.
+    ///
+    /// Valid: `d_h < d_w ≤ D_A`. Source: VDI 2230-1, from memory.
+    /// Checked: `cone_closed_form_equals_the_integral`, `cone_of_30_degrees_is_two_frusta`, examples A, A′, B.
+    pub fn stretch(&self, tangent: f64) -> f64 {
+        let (seat, hole) = (self.seat_diameter, self.hole_diameter);
+        let weight = self.kind.weight();
+        let limit = seat + weight * self.grip * tangent;
+        let end = limit.min(self.outer_diameter);
+        let cone = 2.0 / (weight * hole * tangent)
+            * ((seat + hole) * (end - hole) / ((seat - hole) * (end + hole))).ln();
+        let sleeve = if self.outer_diameter < limit {
+            4.0 / (self.outer_diameter.powi(2) - hole.powi(2))
+                * (self.grip - (self.outer_diameter - seat) / (weight * tangent))
+        } else {
+            0.0
+        };
+        (cone + sleeve) / PI
+    }
+}
+
+/// One layer of a clamped stack.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct StackLayer {
+    /// Thickness, m.
+    pub thickness: f64,
+    /// Young's modulus, Pa.
+    pub youngs_modulus: f64,
+    /// Hole diameter, m.
+    pub hole_diameter: f64,
+}
+
+/// Compliance of a stack of layers inside the substitute cone, head side first, m/N.
+///
+/// Each layer is cut where the cone changes its form and every piece is a frustum or a sleeve in closed form.
+/// With equal layers this is [`Clamped::stretch`] over E.
+///
+/// Source: VDI 2230-1, cone cut into layers. Checked: `equal_layers_are_one_body`.
+pub fn stack_compliance(clamped: &Clamped, layers: &[StackLayer]) -> f64 {
+    let tangent = clamped.cone_tangent();
+    let cone = clamped.cone_length(tangent);
+    let cuts = match clamped.kind {
+        ConeKind::Through => [cone, clamped.grip - cone],
+        ConeKind::Tapped => [cone, cone],
+    };
+    let mut top = 0.0;
+    let mut sum = 0.0;
+    for layer in layers {
+        let bottom = top + layer.thickness;
+        let inside = cuts
+            .iter()
+            .copied()
+            .filter(|cut| top < *cut && *cut < bottom);
+        let mut from = top;
+        for to in inside.chain([bottom]) {
+            sum += frustum_stretch(
+                [
+                    clamped.diameter_at(from, tangent),
+                    clamped.diameter_at(to, tangent),
+                ],
+                layer.hole_diameter,
+                to - from,
+            ) / layer.youngs_modulus;
+            from = to;
+        }
+        top = bottom;
+    }
+    sum
+}
+
+/// ∫ dz/A over a hollow frustum, 1/m: `4/π ∫ dz/(D² − d_h²)` with D linear in z.
+fn frustum_stretch(diameters: [f64; 2], hole: f64, length: f64) -> f64 {
+    let [first, last] = diameters;
+    let rise = (last - first).abs();
+    if rise < 1e-9 * first {
+        return 4.0 * length / (PI * (first * first - hole * hole));
+    }
+    let (small, large) = (first.min(last), first.max(last));
+    let log = ((small + hole) * (large - hole) / ((small - hole) * (large + hole))).ln();
+    2.0 * length / (PI * hole * rise) * log
+}

@@ -1,0 +1,126 @@
+//! Resistance against torque: the band at every torque, the limit of strength, the best torque.
+
+use crate::{
+    estimate::{self, Chain, Failure, Options, TorquePoint, TorqueSweep},
+    joint::{Joint, Limit, Plane, RequirementKind, Tightening},
+};
+
+use super::draws;
+
+/// Which torques to try.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct SweepOptions {
+    /// Index of the fastener group that is varied.
+    pub group: usize,
+    /// Lowest torque, N m; a quarter of the stated torque when absent.
+    pub from: Option<f64>,
+    /// Highest torque, N m; past the stated and the largest torque when absent.
+    pub to: Option<f64>,
+    /// Number of torques, at least two.
+    pub steps: usize,
+    /// Draws and seed.
+    pub chain: Options,
+}
+
+/// Share of the stated torque at which a sweep starts unless told otherwise.
+const START: f64 = 0.25;
+/// How far past the stated and the largest torque a sweep runs unless told otherwise.
+const BEYOND: f64 = 1.25;
+
+/// Sweeps the torque of one group and runs the whole chain at each.
+///
+/// Every torque is drawn with the same points, so that differences between torques are not noise.
+pub fn torque_sweep(joint: &Joint, options: &SweepOptions) -> Result<TorqueSweep, Failure> {
+    let group = joint
+        .fasteners
+        .get(options.group)
+        .ok_or(Failure::NoSuchGroup {
+            asked: options.group + 1,
+            known: joint.fasteners.len(),
+        })?;
+    let Tightening::Torque(stated) = &group.tightening else {
+        return Err(Failure::NotByTorque {
+            group: options.group + 1,
+        });
+    };
+    let stated = stated.torque;
+    let chain = Chain::new(joint)?;
+    let largest = chain.largest_torque(options.group);
+    let from = options.from.unwrap_or(START * stated);
+    let to = options
+        .to
+        .unwrap_or_else(|| BEYOND * largest.map_or(stated, |(torque, _)| torque.max(stated)));
+    if !(0.0 < from && from < to && to.is_finite() && options.steps >= 2) {
+        return Err(Failure::SweepRange { from, to });
+    }
+    let points = (0..options.steps)
+        .map(|step| from + (to - from) * step as f64 / (options.steps - 1) as f64)
+        .map(|torque| point(joint, options, torque))
+        .collect::<Result<Vec<TorquePoint>, Failure>>()?;
+    let best = points
+        .iter()
+        .min_by(|one, other| {
+            let key = |point: &TorquePoint| point.source_to_sink.nominal;
+            key(one).total_cmp(&key(other))
+        })
+        .map_or(stated, |point| point.torque);
+    Ok(TorqueSweep {
+        title: joint.title.clone(),
+        group: estimate::group_label(group),
+        stated,
+        largest,
+        best,
+        points,
+        required: required(joint),
+        cautions: estimate::sweep_cautions(joint),
+    })
+}
+
+fn point(joint: &Joint, options: &SweepOptions, torque: f64) -> Result<TorquePoint, Failure> {
+    let mut changed = joint.clone();
+    if let Tightening::Torque(tightening) = &mut changed.fasteners[options.group].tightening {
+        tightening.torque = torque;
+    }
+    let chain = Chain::new(&changed)?;
+    let nominal = chain.state(0, &estimate::Realisation::default())?;
+    let path = &nominal.path;
+    let (source_to_sink, contact, added) = (
+        path.source_to_sink,
+        path.contact.recip(),
+        path.added_by_joint,
+    );
+    let strength = chain.strength(options.group);
+    let draws = match options.chain.draws {
+        0 => None,
+        _ => Some(draws(&chain, 0, &options.chain)?),
+    };
+    let band = |nominal: f64, of: fn(&super::Draws, f64) -> estimate::Band| {
+        draws
+            .as_ref()
+            .map_or(estimate::Band::nominal(nominal), |draws| of(draws, nominal))
+    };
+    Ok(TorquePoint {
+        torque,
+        force: chain.force(options.group),
+        source_to_sink: band(source_to_sink, super::Draws::source_to_sink),
+        contact: band(contact, super::Draws::contact),
+        added_by_joint: band(added, super::Draws::added_by_joint),
+        strength_use: strength.equivalent,
+        passes: strength.passes,
+    })
+}
+
+/// The requirement as a source-to-sink resistance, where it can be put so.
+fn required(joint: &Joint) -> Option<(f64, Limit)> {
+    let require = joint.service.require?;
+    let flipped = match require.bound {
+        Limit::Most => Limit::Least,
+        Limit::Least => Limit::Most,
+    };
+    match require.kind {
+        RequirementKind::Rise => Some((require.limit / joint.service.heat?, require.bound)),
+        RequirementKind::Resistance(Plane::SourceToSink) => Some((require.limit, require.bound)),
+        RequirementKind::Conductance(Plane::SourceToSink) => Some((require.limit.recip(), flipped)),
+        _ => None,
+    }
+}

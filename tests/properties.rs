@@ -1,0 +1,193 @@
+//! What must hold for every joint, whatever the numbers.
+
+use proptest::prelude::*;
+use ringsum::{
+    estimate::{Chain, Realisation, State},
+    joint::{self, Engagement, Joint, Outline, Source, Tightening, Zone},
+};
+
+const BOX: &str = include_str!("../joints/converter_box.toml");
+
+fn converter_box() -> Joint {
+    joint::read(BOX).expect("the demo joint is good")
+}
+
+fn state(joint: &Joint) -> State {
+    let chain = Chain::new(joint).expect("a chain");
+    chain.state(0, &Realisation::default()).expect("a state")
+}
+
+fn with_torque(mut joint: Joint, torque: f64) -> Joint {
+    for group in &mut joint.fasteners {
+        if let Tightening::Torque(tightening) = &mut group.tightening {
+            tightening.torque = torque;
+        }
+    }
+    joint
+}
+
+fn with_roughness(mut joint: Joint, factor: f64) -> Joint {
+    for plate in &mut joint.plates {
+        let roughness = &mut plate.finish.roughness;
+        for value in [
+            &mut roughness.low,
+            &mut roughness.nominal,
+            &mut roughness.high,
+        ] {
+            *value *= factor;
+        }
+    }
+    joint
+}
+
+proptest! {
+    #![proptest_config(ProptestConfig::with_cases(24))]
+
+    /// Wherever the bolts stand, also where edges and neighbours cut their fields.
+    #[test]
+    fn pressure_carries_the_clamp_force(
+        x in 0.006..0.060f64,
+        y in 0.006..0.050f64,
+        pitch in 0.013..0.090f64,
+    ) {
+        let mut joint = converter_box();
+        joint.fasteners[0].places = vec![[x, y], [x + pitch, y]];
+        let chain = Chain::new(&joint).expect("a chain");
+        let state = chain.state(0, &Realisation::default()).expect("a state");
+        let carried = chain.pressure(&state).force;
+        let clamped: f64 = state.forces.iter().sum();
+        // The field is normalised by the quadrature that also reads it.
+        prop_assert!((carried / clamped - 1.0).abs() < 1e-6, "{carried} N of {clamped} N");
+    }
+
+    /// In vacuum nothing but the spots carries heat between the faces, and they only grow.
+    #[test]
+    fn more_torque_never_raises_the_resistance_in_vacuum(
+        torque in 0.5..4.0f64,
+        more in 1.01..2.0f64,
+    ) {
+        let [less, more] = [torque, torque * more]
+            .map(|torque| state(&with_torque(converter_box(), torque)).path);
+        prop_assert!(more.source_to_sink <= less.source_to_sink);
+        prop_assert!(more.contact >= less.contact);
+    }
+
+    #[test]
+    fn doubling_the_roughness_never_lowers_the_resistance(factor in 0.3..3.0f64) {
+        let [fine, rough] = [factor, 2.0 * factor]
+            .map(|factor| state(&with_roughness(converter_box(), factor)).path);
+        prop_assert!(rough.source_to_sink >= fine.source_to_sink);
+        prop_assert!(rough.contact <= fine.contact);
+    }
+
+    #[test]
+    fn the_order_of_the_bolts_changes_nothing(shift in 1usize..6, reverse: bool) {
+        let joint = converter_box();
+        let mut moved = joint.clone();
+        moved.fasteners[0].places.rotate_left(shift);
+        if reverse {
+            moved.fasteners[0].places.reverse();
+        }
+        let [one, other] = [state(&joint).path, state(&moved).path];
+        // Sums over bolts in another order: rounding alone.
+        prop_assert!((one.source_to_sink / other.source_to_sink - 1.0).abs() < 1e-12);
+        prop_assert!((one.contact / other.contact - 1.0).abs() < 1e-12);
+    }
+}
+
+/// The same joint told in millimetres, newtons, seconds and kelvin (heat then in mW) gives the
+/// same physics. A constant that hides a unit breaks this.
+///
+/// Radiation is switched off: the Stefan-Boltzmann constant is such a constant, and rightly so.
+#[test]
+fn physics_does_not_know_which_units_it_is_in() {
+    const MM: f64 = 1e3;
+    let mut metre = converter_box();
+    metre.contact.emissivity = [1e-12; 2];
+    let millimetre = in_millimetres(&metre, MM);
+    let [metre, millimetre] = [state(&metre), state(&millimetre)];
+    let ratio = |one: f64, other: f64| (one / other - 1.0).abs();
+    // Powers of ten are not exact in binary: 1e-12 is a few roundings.
+    assert!(ratio(metre.forces[0], millimetre.forces[0]) < 1e-12);
+    assert!(ratio(metre.path.contact * MM, millimetre.path.contact) < 1e-9);
+    assert!(
+        ratio(
+            metre.path.source_to_sink / MM,
+            millimetre.path.source_to_sink
+        ) < 1e-9
+    );
+    assert!(ratio(metre.path.node_to_node / MM, millimetre.path.node_to_node) < 1e-9);
+}
+
+/// Lengths times `mm`; pressures and moduli over `mm²`; torque times `mm`; conductivity in
+/// mW/(mm K) is the same number; a film over `mm`.
+fn in_millimetres(joint: &Joint, mm: f64) -> Joint {
+    let mut joint = joint.clone();
+    let point = |place: &mut [f64; 2]| place.iter_mut().for_each(|x| *x *= mm);
+    for plate in &mut joint.plates {
+        plate.thickness *= mm;
+        point(&mut plate.origin);
+        match &mut plate.outline {
+            Outline::Rectangle { size } => point(size),
+            Outline::Disc { radius } => *radius *= mm,
+        }
+        let roughness = &mut plate.finish.roughness;
+        for value in [
+            &mut roughness.low,
+            &mut roughness.nominal,
+            &mut roughness.high,
+        ] {
+            *value *= mm;
+        }
+        let material = &mut plate.material;
+        material.youngs_modulus.value /= mm * mm;
+        if let Some(hardness) = &mut material.hardness {
+            hardness.value /= mm * mm;
+            hardness.range = None;
+        }
+    }
+    if let Source {
+        zone: Zone::Rectangle { centre, size },
+        ..
+    } = &mut joint.source
+    {
+        point(centre);
+        point(size);
+    }
+    if let joint::Sink::Film(film) = &mut joint.sink {
+        // mW/(mm² K) = W/(m² K) · 10³/10⁶.
+        *film /= mm;
+    }
+    for group in &mut joint.fasteners {
+        let thread = &mut group.thread;
+        for length in [
+            &mut thread.diameter,
+            &mut thread.pitch,
+            &mut thread.pitch_diameter,
+            &mut thread.minor_diameter,
+            &mut thread.nut_minor_diameter,
+            &mut thread.stress_diameter,
+            &mut group.friction_radius,
+            &mut group.washer_thickness,
+        ] {
+            *length *= mm;
+        }
+        thread.stress_area *= mm * mm;
+        for seat in [Some(&mut group.head_seat), group.nut_seat.as_mut()]
+            .into_iter()
+            .flatten()
+        {
+            seat.inner_radius *= mm;
+            seat.outer_radius *= mm;
+        }
+        point(&mut group.hole_radius);
+        group.places.iter_mut().for_each(point);
+        group.grade.youngs_modulus /= mm * mm;
+        assert!(matches!(group.engagement, Engagement::Nut));
+        if let Tightening::Torque(tightening) = &mut group.tightening {
+            tightening.torque *= mm;
+            tightening.running *= mm;
+        }
+    }
+    joint
+}
