@@ -2,12 +2,11 @@
 
 use crate::{
     cli::{
-        chain::{self, Options},
-        check,
+        chain, check,
         console::{Console, Layout, Outcome, Trouble},
         input,
     },
-    estimate::{self, RingRow},
+    estimate::{self, Options, RingRow},
     report::{
         json,
         text::{self, Detail},
@@ -67,6 +66,16 @@ pub struct Draws {
     pub seed: u64,
 }
 
+impl Draws {
+    /// The same for the chain.
+    pub fn options(self) -> Options {
+        Options {
+            draws: self.draws,
+            seed: self.seed,
+        }
+    }
+}
+
 /// The fields of this build.
 fn field(name: &str) -> Result<String, String> {
     match name {
@@ -109,11 +118,7 @@ impl Estimate {
                 return Err(refused.trouble());
             }
         };
-        let options = Options {
-            draws: self.draws.draws,
-            seed: self.draws.seed,
-        };
-        let found = chain::estimate(&joint, &options).and_then(|estimate| {
+        let found = chain::estimate(&joint, &self.draws.options()).and_then(|estimate| {
             let rings = if self.rings {
                 chain::ring_tables(&joint)?
             } else {

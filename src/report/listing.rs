@@ -1,7 +1,7 @@
 //! Lists of things by name: catalogue records, codes, faults; as text and as JSON.
 
 use crate::{
-    diagnostic::Fault,
+    joint::Faults,
     report::{
         json::FORMAT,
         number::{plain, wrapped},
@@ -108,15 +108,23 @@ pub fn json(listings: &[Listing]) -> Value {
     json!({ "ringsum": env!("CARGO_PKG_VERSION"), "format": FORMAT, "kinds": kinds })
 }
 
-/// The faults of one file, with line and column counted from 1; `ok` when there are none.
-pub fn faults(path: &str, text: &str, faults: &[Fault]) -> Value {
-    let list: Vec<Value> = faults
+/// A file without faults.
+pub fn accepted(path: &str) -> Value {
+    checked(path, &[])
+}
+
+/// The faults of one file, with line and column counted from 1. A fault in an override names the
+/// override as its file.
+pub fn faults(path: &str, found: &Faults) -> Value {
+    let list: Vec<Value> = found
+        .faults
         .iter()
-        .map(|fault| {
+        .map(|(source, fault)| {
+            let (name, text) = &found.sources[*source];
             let (line, column) = place(text, fault.span.start);
             json!({
                 "code": fault.code,
-                "file": path,
+                "file": if name.is_empty() { path } else { name },
                 "line": line,
                 "column": column,
                 "message": fault.message,
@@ -125,12 +133,16 @@ pub fn faults(path: &str, text: &str, faults: &[Fault]) -> Value {
             })
         })
         .collect();
+    checked(path, &list)
+}
+
+fn checked(path: &str, faults: &[Value]) -> Value {
     json!({
         "ringsum": env!("CARGO_PKG_VERSION"),
         "format": FORMAT,
         "file": path,
         "ok": faults.is_empty(),
-        "faults": list,
+        "faults": faults,
     })
 }
 
