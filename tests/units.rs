@@ -357,6 +357,25 @@ fn slips_of_upper_and_lower_case_are_refused_with_the_right_spelling() {
 }
 
 #[test]
+fn words_for_symbols_are_refused_with_the_symbol() {
+    for (text, quantity, fix) in [
+        ("5 microns", Quantity::Length, "`5 µm`"),
+        ("5 inches", Quantity::Length, "`5 in`"),
+        ("5 Millimetres", Quantity::Length, "`5 mm`"),
+        ("500 lbs", Quantity::Force, "`500 lb`"),
+        ("12 in-lbs", Quantity::Torque, "`12 in-lb`"),
+        ("5 Newton", Quantity::Force, "`5 N`"),
+        ("20 ° C", Quantity::Temperature, "`20 °C`"),
+        ("20 Celsius", Quantity::Temperature, "`20 °C`"),
+        ("30 degrees", Quantity::Angle, "`30 °`"),
+        ("5 percent", Quantity::Ratio, "`5 %`"),
+        ("2 barg", Quantity::Pressure, "absolute pressure"),
+    ] {
+        assert_refused(text, quantity, "is not a unit", fix);
+    }
+}
+
+#[test]
 fn what_can_be_read_two_ways_is_refused() {
     for (text, quantity, fix) in [
         ("1.7 W/cm·K", Quantity::Conductivity, "`1.7 W/(cm·K)`"),
@@ -379,13 +398,16 @@ fn numbers_that_need_a_guess_are_refused() {
         ("inf mm", "not a finite number", "`4 mm`"),
         ("-nan mm", "not a finite number", "`4 mm`"),
         ("1e999 mm", "too large", "`4 mm`"),
-        ("5-6 mm", "is a range", "`4 mm`"),
-        ("5 - 6 mm", "is a range", "`4 mm`"),
-        ("5 ± 1 mm", "is a range", "`4 mm`"),
-        ("5..6 mm", "is a range", "`4 mm`"),
+        ("5-6 mm", "more than one number", "`4 mm`"),
+        ("5 - 6 mm", "more than one number", "`4 mm`"),
+        ("5 ± 1 mm", "more than one number", "`4 mm`"),
+        ("5..6 mm", "more than one number", "`4 mm`"),
         ("1.2×10^-4 m", "power of ten", "1.2e-4"),
         ("1.2 x 10⁻⁴ m", "power of ten", "1.2e-4"),
         ("M8", "is a thread", "`8 mm`"),
+        ("Ø 5 mm", "diameter sign", "`5 mm`"),
+        ("1e308 km", "too large", "`4 mm`"),
+        ("1.2.3 mm", "more than one number", "`4 mm`"),
         ("mm", "does not start with a number", "`4 mm`"),
         ("0.25\"", "double quote", "`0.25 in`"),
         ("3'", "quote", "`ft`"),

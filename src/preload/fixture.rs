@@ -50,7 +50,7 @@ pub fn grade() -> Grade {
     }
 }
 
-/// 9.5 N·m, 5 %, class B friction, hexagon head in a medium hole.
+/// 7 N·m, 5 %, class B friction, hexagon head in a medium hole.
 pub fn m6() -> Fastener {
     let friction = Bounds {
         low: 0.08,

@@ -344,6 +344,7 @@ mod tests {
             assert!((torque - 7.0).abs() < 1e-12);
             assert!(balance.levers.thread < balance.levers.total);
         }
+        assert!((force_band(&bolt).nominal - force_band(&m6()).nominal).abs() < 1e-9);
     }
 
     proptest! {

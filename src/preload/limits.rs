@@ -1,10 +1,10 @@
 //! Every limit of a tightened bolt, its use at the highest force, and the largest torque they allow.
 
 use crate::{
-    catalog::Material,
+    catalog::{Datum, Material},
     joint::{Engagement, Fastener, Joint, Tightening},
     preload::{
-        engagement::{PairStrength, SHEAR_OVER_YIELD, ThreadedPart, strip_width},
+        engagement::{PairStrength, ThreadedPart, plate_shear_strength, strip_width},
         force::{Place, balance, clamp_force, force_band, tool_factor, torsion},
         strength::{
             Load, TorsionRule, Twist, force_at_stress, proof_load, seat_pressure, von_mises,
@@ -31,15 +31,16 @@ pub struct Supports {
 impl Supports {
     /// Supports from the material under the head and that of the far plate.
     ///
-    /// The shear strength of the far plate is 0.577 of its yield strength.
+    /// The shear strength of the far plate is that of [`plate_shear_strength`].
     pub fn of(head: &Material, far: &Material) -> Self {
-        let value = |datum: &Option<crate::catalog::Datum>| datum.as_ref().map(|datum| datum.value);
+        let value = |datum: &Option<Datum>| datum.as_ref().map(|datum| datum.value);
         Self {
             head_limit: value(&head.bearing_limit),
             nut_limit: value(&far.bearing_limit),
             far: ThreadedPart {
                 family: far.family.clone(),
-                shear_strength: value(&far.yield_strength).map(|yield_| SHEAR_OVER_YIELD * yield_),
+                shear_strength: value(&far.yield_strength)
+                    .map(|strength| plate_shear_strength(&far.family, strength)),
             },
         }
     }

@@ -264,3 +264,6 @@ pub fn cells(plan: &Plan) -> Cells {
         plan: plan.clone(),
     }
 }
+
+#[cfg(test)]
+mod tests;
