@@ -40,9 +40,12 @@ pub struct Estimate {
     /// Override a field: --set 'plate.box.thickness="6 mm"'
     #[arg(long = "set", value_name = "KEY=VALUE")]
     sets: Vec<String>,
-    /// Leave out the list of assumptions
+    /// Shorter: count the assumptions, name the lesser cautions by code
     #[arg(long)]
     brief: bool,
+    /// Longer: every caution in full, every assumption with its reason
+    #[arg(long, conflicts_with = "brief")]
+    full: bool,
     /// Add the rings around every bolt
     #[arg(long)]
     rings: bool,
@@ -163,10 +166,10 @@ impl Estimate {
             console.json(&object, Layout::of_batch(self.files.len()))?;
             return Ok(());
         }
-        let detail = if self.brief {
-            Detail::Brief
-        } else {
-            Detail::Full
+        let detail = match (self.brief, self.full) {
+            (true, _) => Detail::Brief,
+            (false, true) => Detail::Full,
+            (false, false) => Detail::Screen,
         };
         let mut report = text::painted(&text::estimate_at(estimate, detail));
         report.push_str(&text::rings(rings));

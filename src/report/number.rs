@@ -117,6 +117,19 @@ pub fn wrapped(text: &str, width: usize, indent: usize) -> String {
     lines
 }
 
+/// The text on one line of at most `width` characters, with `…` where the rest is cut off.
+pub fn cut(text: &str, width: usize) -> String {
+    if text.chars().count() <= width {
+        return text.to_owned();
+    }
+    let kept: String = text.chars().take(width.saturating_sub(1)).collect();
+    // A half word reads as another word; one long word has no better place to end.
+    let kept = kept
+        .rsplit_once(' ')
+        .map_or(kept.as_str(), |(whole, _)| whole);
+    format!("{kept}…")
+}
+
 #[cfg(test)]
 mod tests {
     use super::*;
@@ -175,6 +188,13 @@ mod tests {
         assert!(lines.lines().all(|line| line.chars().count() <= 20));
         assert_eq!(lines.split_whitespace().count(), 12);
         assert!(lines.lines().skip(1).all(|line| line.starts_with("    ")));
+    }
+
+    #[test]
+    fn cut_text_ends_at_a_word_within_the_width() {
+        assert_eq!(cut("short", 5), "short");
+        assert_eq!(cut("force of a bolt", 10), "force of…");
+        assert_eq!(cut("µµµµµµµµ", 4), "µµµ…");
     }
 
     #[test]
