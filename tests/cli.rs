@@ -20,19 +20,25 @@ fn within(folder: &TempDir) -> Command {
 
 fn names(folder: &Path) -> Vec<String> {
     let mut names: Vec<String> = fs::read_dir(folder)
-        .unwrap()
-        .map(|entry| entry.unwrap().file_name().into_string().unwrap())
+        .expect("the test set this up")
+        .map(|entry| {
+            entry
+                .expect("the test set this up")
+                .file_name()
+                .into_string()
+                .expect("the test set this up")
+        })
         .collect();
     names.sort();
     names
 }
 
 fn stdout(assert: &OutputAssert) -> String {
-    String::from_utf8(assert.get_output().stdout.clone()).unwrap()
+    String::from_utf8(assert.get_output().stdout.clone()).expect("the test set this up")
 }
 
 fn stderr(assert: &OutputAssert) -> String {
-    String::from_utf8(assert.get_output().stderr.clone()).unwrap()
+    String::from_utf8(assert.get_output().stderr.clone()).expect("the test set this up")
 }
 
 #[test]
@@ -40,12 +46,12 @@ fn without_arguments_three_lines_lead_to_a_result() {
     ringsum()
         .assert()
         .code(0)
-        .stdout_eq(str![[r#"
+        .stdout_eq(str![[r"
 ringsum new joint.toml         writes a starter joint to edit
 ringsum estimate joint.toml    tells its thermal resistance: low, nominal, high
 ringsum --help                 lists every command
 
-"#]])
+"]])
         .stderr_eq("");
 }
 
@@ -486,13 +492,13 @@ fn arguments_that_are_no_text_do_not_bring_it_down() {
 
 /// A folder with the starter joint in it.
 fn starter() -> TempDir {
-    let folder = tempdir().unwrap();
+    let folder = tempdir().expect("the test set this up");
     within(&folder).args(["new", "joint.toml"]).assert().code(0);
     folder
 }
 
 fn json(assert: &OutputAssert) -> serde_json::Value {
-    serde_json::from_str(&stdout(assert)).unwrap()
+    serde_json::from_str(&stdout(assert)).expect("the test set this up")
 }
 
 /// Few draws: these tests look at the plumbing, not at the digits.

@@ -28,7 +28,7 @@ impl List {
     /// Lists the kinds, one kind, or whatever answers to the words.
     pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
         let all = chain::listings();
-        let Some(first) = self.kind else {
+        let Some(first) = self.kind.filter(|word| !word.trim().is_empty()) else {
             if self.json {
                 console.json(&listing::json(&all), Layout::Indented)?;
             } else {
