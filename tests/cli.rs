@@ -20,19 +20,25 @@ fn within(folder: &TempDir) -> Command {
 
 fn names(folder: &Path) -> Vec<String> {
     let mut names: Vec<String> = fs::read_dir(folder)
-        .unwrap()
-        .map(|entry| entry.unwrap().file_name().into_string().unwrap())
+        .expect("the test set this up")
+        .map(|entry| {
+            entry
+                .expect("the test set this up")
+                .file_name()
+                .into_string()
+                .expect("the test set this up")
+        })
         .collect();
     names.sort();
     names
 }
 
 fn stdout(assert: &OutputAssert) -> String {
-    String::from_utf8(assert.get_output().stdout.clone()).unwrap()
+    String::from_utf8(assert.get_output().stdout.clone()).expect("the test set this up")
 }
 
 fn stderr(assert: &OutputAssert) -> String {
-    String::from_utf8(assert.get_output().stderr.clone()).unwrap()
+    String::from_utf8(assert.get_output().stderr.clone()).expect("the test set this up")
 }
 
 #[test]
@@ -40,12 +46,12 @@ fn without_arguments_three_lines_lead_to_a_result() {
     ringsum()
         .assert()
         .code(0)
-        .stdout_eq(str![[r#"
+        .stdout_eq(str![[r"
 ringsum new joint.toml         writes a starter joint to edit
 ringsum estimate joint.toml    tells its thermal resistance: low, nominal, high
 ringsum --help                 lists every command
 
-"#]])
+"]])
         .stderr_eq("");
 }
 
@@ -155,7 +161,7 @@ fn a_folder_an_empty_file_and_foreign_bytes_are_faults_of_the_file() {
     write("latin.toml", b"title = \"x\"\nthickness = \"5 \xB5m\"\n");
     write("wide.toml", b"\xFF\xFEt\0i\0");
     for (name, code, word) in [
-        ("folder", "file/unreadable", "folder"),
+        ("folder", "file/not-found", "folder"),
         ("empty.toml", "file/empty", "empty"),
         ("blank.toml", "file/empty", "empty"),
         ("latin.toml", "file/not-utf8", "0xB5 on line 2"),
@@ -482,4 +488,349 @@ fn arguments_that_are_no_text_do_not_bring_it_down() {
         .code(2)
         .stdout_eq("");
     ringsum().arg(odd).assert().code(2).stdout_eq("");
+}
+
+/// A folder with the starter joint in it.
+fn starter() -> TempDir {
+    let folder = tempdir().expect("the test set this up");
+    within(&folder).args(["new", "joint.toml"]).assert().code(0);
+    folder
+}
+
+fn json(assert: &OutputAssert) -> serde_json::Value {
+    serde_json::from_str(&stdout(assert)).expect("the test set this up")
+}
+
+/// Few draws: these tests look at the plumbing, not at the digits.
+const FEW: [&str; 2] = ["--draws", "32"];
+
+#[test]
+fn the_starter_joint_is_accepted_as_it_stands() {
+    let folder = starter();
+    let checked = within(&folder)
+        .args(["check", "joint.toml"])
+        .assert()
+        .code(0)
+        .stderr_eq("");
+    assert!(stdout(&checked).starts_with("joint.toml: ok, 2 plates, 4 bolts"));
+    let told = within(&folder)
+        .args(["estimate", "joint.toml"])
+        .args(FEW)
+        .assert()
+        .code(0);
+    let report = stdout(&told.stderr_eq(""));
+    assert!(report.starts_with("Box on panel\n"), "{report}");
+    assert!(
+        report.contains("contact only") && report.contains("source to sink"),
+        "{report}"
+    );
+    assert!(!report.contains('\u{1b}'), "plain when piped");
+    assert!(
+        report.lines().all(|line| line.chars().count() <= 100),
+        "{report}"
+    );
+}
+
+#[test]
+fn a_joint_from_standard_input_gives_the_same_numbers() {
+    let folder = starter();
+    let text = fs::read_to_string(folder.path().join("joint.toml")).unwrap();
+    let of_file = within(&folder)
+        .args(["estimate", "joint.toml"])
+        .args(FEW)
+        .assert()
+        .code(0);
+    let of_input = ringsum()
+        .args(["estimate", "-"])
+        .args(FEW)
+        .stdin(text)
+        .assert()
+        .code(0);
+    assert_eq!(stdout(&of_file), stdout(&of_input));
+}
+
+#[test]
+fn json_is_one_object_with_the_contract_and_the_file() {
+    let folder = starter();
+    let arguments = ["estimate", "joint.toml", "--json", "--rings", "--seed", "5"];
+    let told = within(&folder)
+        .args(arguments)
+        .args(FEW)
+        .assert()
+        .code(0)
+        .stderr_eq("");
+    let object = json(&told);
+    assert_eq!(object["file"], "joint.toml");
+    assert_eq!(object["seed"], 5);
+    assert_eq!(object["draws"], 32);
+    assert_eq!(object["bolts"].as_array().unwrap().len(), 4);
+    assert_eq!(object["rings"].as_array().unwrap().len(), 4);
+    let result = &object["results"]["source_to_sink"];
+    let value = |side: &str, end: &str| result[side][end].as_f64().unwrap();
+    // One division apart: the last digit alone may differ.
+    assert!((value("resistance", "low") * value("conductance", "high") - 1.0).abs() < 1e-12);
+    assert!(value("resistance", "low") <= value("resistance", "nominal"));
+    assert!(value("resistance", "nominal") <= value("resistance", "high"));
+}
+
+#[test]
+fn one_seed_gives_one_output_and_no_draws_give_no_band() {
+    let folder = starter();
+    let told = |arguments: &[&str]| {
+        let command = within(&folder).args(["estimate", "joint.toml", "--json"]);
+        stdout(&command.args(arguments).assert().code(0))
+    };
+    let first = told(&["--draws", "32", "--seed", "3"]);
+    assert_eq!(first, told(&["--draws", "32", "--seed", "3"]));
+    assert_ne!(first, told(&["--draws", "32", "--seed", "4"]));
+    let nominal: serde_json::Value = serde_json::from_str(&told(&["--draws", "0"])).unwrap();
+    assert!(nominal["results"]["contact"]["resistance"]["low"].is_null());
+}
+
+#[test]
+fn cautions_end_with_three_only_when_strict() {
+    let folder = starter();
+    within(&folder)
+        .args(["estimate", "joint.toml"])
+        .args(FEW)
+        .assert()
+        .code(0);
+    let strict = within(&folder)
+        .args(["estimate", "joint.toml", "--strict"])
+        .args(FEW);
+    assert!(
+        stdout(&strict.assert().code(3)).contains("cautions"),
+        "the result stands"
+    );
+}
+
+#[test]
+fn an_override_changes_the_joint_and_a_wrong_one_is_pointed_at() {
+    let folder = starter();
+    let told = |set: &str| {
+        let command =
+            within(&folder).args(["estimate", "joint.toml", "--draws", "0", "--set", set]);
+        command.assert()
+    };
+    let before = stdout(&told("title=\"Box on panel\"").code(0));
+    let after = stdout(&told("plate.box.thickness=\"9 mm\"").code(0));
+    assert_ne!(before, after);
+    let wrong = told("plate.box.thicknes=\"9 mm\"").code(2).stdout_eq("");
+    assert!(
+        stderr(&wrong).contains("set/bad-override"),
+        "{}",
+        stderr(&wrong)
+    );
+    assert!(stderr(&wrong).contains("thickness"), "{}", stderr(&wrong));
+}
+
+#[test]
+fn a_batch_tells_every_file_and_fails_as_a_whole() {
+    let folder = starter();
+    let files = ["joint.toml", "absent.toml", "joint.toml"];
+    let both = within(&folder)
+        .arg("estimate")
+        .args(files)
+        .args(FEW)
+        .assert()
+        .code(1);
+    assert_eq!(stdout(&both).matches("Box on panel\n").count(), 2);
+    assert!(stderr(&both).contains("absent.toml"));
+    let lines = within(&folder)
+        .args(["estimate", "--json"])
+        .args(files)
+        .args(FEW)
+        .assert()
+        .code(1);
+    let told = stdout(&lines);
+    let objects: Vec<serde_json::Value> = told
+        .lines()
+        .map(|line| serde_json::from_str(line).unwrap())
+        .collect();
+    assert_eq!(
+        objects.len(),
+        3,
+        "one object per line, in the order of the files"
+    );
+    assert_eq!(objects[1]["ok"], false);
+    assert_eq!(objects[1]["faults"][0]["code"], "file/not-found");
+}
+
+#[test]
+fn faults_are_all_told_with_their_places() {
+    let folder = starter();
+    let path = folder.path().join("joint.toml");
+    let text = fs::read_to_string(&path).unwrap();
+    let broken = text
+        .replace("torque =", "torqe =")
+        .replace("thickness = \"5 mm\"", "thickness = 5");
+    fs::write(&path, &broken).unwrap();
+    let told = within(&folder)
+        .args(["check", "joint.toml", "--json"])
+        .assert()
+        .code(2);
+    let object = json(&told);
+    let faults = object["faults"].as_array().unwrap();
+    let line = broken
+        .lines()
+        .position(|line| line.starts_with("torqe"))
+        .unwrap()
+        + 1;
+    assert!(faults.iter().any(|fault| fault["line"] == line), "{object}");
+    assert!(
+        faults
+            .iter()
+            .any(|fault| fault["code"] == "unit/bare-number"),
+        "{object}"
+    );
+    let shown = within(&folder)
+        .args(["check", "joint.toml"])
+        .assert()
+        .code(2)
+        .stdout_eq("");
+    assert!(
+        stderr(&shown).contains(&format!("joint.toml:{line}:1")),
+        "{}",
+        stderr(&shown)
+    );
+}
+
+#[test]
+fn a_joint_that_opens_is_a_failure() {
+    let folder = starter();
+    let open = within(&folder)
+        .args(["estimate", "joint.toml", "--draws", "0"])
+        .args(["--set", "fastener.torque.value=\"0.01 N·m\""])
+        .args([
+            "--set",
+            "service.temperature={ hot = \"-100 °C\", assembly = \"20 °C\" }",
+        ])
+        .assert()
+        .code(1)
+        .stdout_eq("");
+    assert!(
+        stderr(&open).contains("joint.toml: no clamp force is left"),
+        "{}",
+        stderr(&open)
+    );
+}
+
+#[test]
+fn a_torque_curve_is_told_and_drawn_without_leaving_anything_behind() {
+    let folder = starter();
+    let sweep = |out: &[&str]| {
+        let command = within(&folder).args(["torque", "joint.toml", "--steps", "3"]);
+        command.args(["--draws", "8"]).args(out).assert()
+    };
+    let told = sweep(&["--out", "curve.svg"]).code(0);
+    assert!(stdout(&told).contains("N·m"));
+    assert_eq!(stderr(&told), "wrote curve.svg\n");
+    let drawn = fs::read_to_string(folder.path().join("curve.svg")).unwrap();
+    assert!(drawn.starts_with("<svg"), "{}", &drawn[..40]);
+    sweep(&["--out", "curve.svg"]).code(2).stdout_eq("");
+    sweep(&["--out", "curve.svg", "--force"]).code(0);
+    sweep(&["--out", "CURVE.PNG"]).code(0);
+    let bytes = fs::read(folder.path().join("CURVE.PNG")).unwrap();
+    assert_eq!(&bytes[1..4], b"PNG");
+    assert_eq!(
+        names(folder.path()),
+        ["CURVE.PNG", "curve.svg", "joint.toml"]
+    );
+
+    let object = json(&sweep(&["--json"]).code(0).stderr_eq(""));
+    assert_eq!(object["points"].as_array().unwrap().len(), 3);
+    sweep(&["--group", "2"]).code(2).stdout_eq("");
+}
+
+#[test]
+fn the_figures_of_a_joint_go_into_a_folder_of_their_own() {
+    let folder = starter();
+    let draw = |more: &[&str]| {
+        let command = within(&folder).args(["draw", "joint.toml", "--out", "made/figures"]);
+        command.args(more).assert()
+    };
+    draw(&["--format", "both"]).code(0).stdout_eq("");
+    let made = folder.path().join("made/figures");
+    assert_eq!(
+        names(&made),
+        [
+            "conductance.png",
+            "conductance.svg",
+            "cumulative.png",
+            "cumulative.svg",
+            "pressure.png",
+            "pressure.svg",
+        ]
+    );
+    draw(&[]).code(2).stdout_eq("");
+    draw(&["--force"]).code(0);
+}
+
+#[test]
+fn the_catalogue_is_listed_filtered_and_told_in_full() {
+    let kinds = stdout(&ringsum().arg("list").assert().code(0).stderr_eq(""));
+    for kind in ["materials", "finishes", "threads", "grades", "fillers"] {
+        assert!(kinds.contains(kind), "{kinds}");
+    }
+    let some = stdout(
+        &ringsum()
+            .args(["list", "material", "7075"])
+            .assert()
+            .code(0),
+    );
+    assert!(
+        some.contains("Al 7075-T6") && !some.contains("304"),
+        "{some}"
+    );
+    let one = stdout(&ringsum().args(["list", "6061-t6"]).assert().code(0));
+    assert!(one.contains("source"), "{one}");
+    let object = json(
+        &ringsum()
+            .args(["list", "gases", "helium", "--json"])
+            .assert()
+            .code(0),
+    );
+    assert_eq!(object["kinds"]["gases"][0]["name"], "helium");
+    ringsum()
+        .args(["list", "materials", "unobtainium"])
+        .assert()
+        .code(2)
+        .stdout_eq("");
+}
+
+#[test]
+fn a_code_is_explained_with_what_to_do() {
+    let page = stdout(
+        &ringsum()
+            .args(["explain", "Preload/Over-Yield"])
+            .assert()
+            .code(0),
+    );
+    assert!(page.starts_with("preload/over-yield"), "{page}");
+    let law = stdout(&ringsum().args(["explain", "planes"]).assert().code(0));
+    assert!(law.contains("node to node"), "{law}");
+    let slip = ringsum()
+        .args(["explain", "preload/over-yeild"])
+        .assert()
+        .code(2)
+        .stdout_eq("");
+    assert!(stderr(&slip).contains("preload/over-yield"));
+}
+
+#[test]
+fn every_code_the_command_line_gives_is_explained() {
+    for code in [
+        "file/not-found",
+        "file/not-utf8",
+        "file/empty",
+        "file/too-large",
+    ] {
+        ringsum().args(["explain", code]).assert().code(0);
+    }
+}
+
+#[test]
+fn the_schema_is_a_schema() {
+    let object = json(&ringsum().arg("schema").assert().code(0));
+    assert_eq!(object["$schema"], "http://json-schema.org/draft-07/schema#");
 }

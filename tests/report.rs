@@ -296,6 +296,7 @@ fn hot_and_cold_repeat_the_block_and_the_first_is_the_headline() {
 #[test]
 fn text_fits_a_screen_and_names_its_planes() {
     let report = text::estimate(&estimate());
+    // A terminal of 45 lines holds the numbers; cautions of a real joint may run on.
     assert!(report.lines().count() <= 45, "{report}");
     for line in report.lines() {
         assert!(line.chars().count() <= WIDTH, "{line}");
@@ -396,6 +397,36 @@ fn text_carries_no_control_characters_of_the_file() {
 }
 
 #[test]
+fn only_cautions_that_are_not_grave_are_cut_to_a_line() {
+    let mut cautious = estimate();
+    let grave = "preload/over-yield";
+    let note = "conductance/finish-not-measured";
+    let text = format!("{} end", "word ".repeat(40));
+    cautious.cautions = [grave, note]
+        .map(|code| Caution {
+            code,
+            text: text.clone(),
+        })
+        .to_vec();
+    let report = text::estimate(&cautious);
+    assert_eq!(report.matches(" end\n").count(), 1, "{report}");
+    assert!(report.contains("…"), "{report}");
+    let full = text::estimate_at(&cautious, Detail::Full);
+    assert_eq!(full.matches(" end\n").count(), 2, "{full}");
+}
+
+#[test]
+fn the_reason_of_an_assumption_is_told_in_full() {
+    let report = text::estimate(&estimate());
+    assert!(report.contains("plate.panel.flatness = flat\n"), "{report}");
+    let full = text::estimate_at(&estimate(), Detail::Full);
+    assert!(
+        full.contains("plate.panel.flatness = flat: no flatness is stated"),
+        "{full}"
+    );
+}
+
+#[test]
 fn colour_changes_no_word() {
     let report = text::estimate(&estimate());
     let painted = text::painted(&report);
@@ -460,6 +491,20 @@ fn a_torque_sweep_marks_the_stated_the_best_and_what_strength_forbids() {
         report.lines().all(|line| line.chars().count() <= WIDTH),
         "{report}"
     );
+}
+
+#[test]
+fn a_torque_beyond_strength_is_never_called_best() {
+    let mut rising = torque_sweep();
+    rising.points[2].source_to_sink.nominal = 0.01;
+    rising.best = 2.2;
+    let report = sweep::torque(&rising);
+    assert!(report.contains("best     1.000 N·m"), "{report}");
+    assert_eq!(json::torque(&rising)["best_within_strength"], json!(1.0));
+    for point in &mut rising.points {
+        point.passes = false;
+    }
+    assert!(sweep::torque(&rising).contains("no torque of this range passes"));
 }
 
 #[test]

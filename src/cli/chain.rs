@@ -1,74 +1,53 @@
 //! The one place where commands meet the chain: reading a joint, estimating it, drawing it.
 
 use crate::{
-    catalog,
+    catalog::{self, Kind},
     cli::console::Trouble,
-    diagnostic::{self, Colour, Fault},
-    estimate::{Estimate, FieldMap, RingRow, TorqueSweep},
+    diagnostic,
+    estimate::{self, Estimate, Failure, FieldMap, Options, RingRow, TorqueSweep},
     figures::{self, Drawing, Format},
     joint::Joint,
-    report::listing::Listing,
+    report::{
+        catalogue,
+        listing::{self, Listing},
+    },
+    uncertainty::{self, SweepOptions},
     units::{self, Quantity},
 };
 
-/// What `estimate` is asked for.
-#[derive(Clone, Copy, Debug)]
-pub struct Options {
-    pub draws: u32,
-    pub seed: u64,
+/// Low, nominal and high of a joint.
+pub fn estimate(joint: &Joint, options: &Options) -> Result<Estimate, Trouble> {
+    Ok(uncertainty::estimate(joint, options)?)
 }
 
-/// What `torque` is asked for.
-#[derive(Clone, Copy, Debug)]
-pub struct SweepOptions {
-    pub group: usize,
-    pub from: Option<f64>,
-    pub to: Option<f64>,
-    pub steps: usize,
-    pub draws: u32,
-    pub seed: u64,
+/// The torque of one group swept.
+pub fn torque_sweep(joint: &Joint, options: &SweepOptions) -> Result<TorqueSweep, Trouble> {
+    Ok(uncertainty::torque_sweep(joint, options)?)
 }
 
-const NOT_BUILT: &str = "not built";
-
-fn not_built<T>() -> Result<T, Trouble> {
-    Err(Trouble::Failure(NOT_BUILT.to_owned()))
+/// Pressure and conductance over the plan.
+pub fn field_map(joint: &Joint, columns: usize) -> Result<FieldMap, Trouble> {
+    Ok(estimate::field_map(joint, columns)?)
 }
 
-pub fn read(text: &str, _sets: &[String]) -> Result<Joint, (String, Vec<Fault>)> {
-    Err((
-        text.to_owned(),
-        vec![Fault {
-            code: "file/format",
-            message: NOT_BUILT.to_owned(),
-            span: 0..0,
-            expected: String::new(),
-            help: None,
-        }],
-    ))
+/// The rings of every bolt.
+pub fn ring_tables(joint: &Joint) -> Result<Vec<Vec<RingRow>>, Trouble> {
+    Ok(estimate::ring_tables(joint)?)
 }
 
-/// A fault drawn into the text it is in. Colour is always there; the console strips it.
-pub fn shown(fault: &Fault, path: &str, text: &str) -> String {
-    let mut drawn = diagnostic::shown(fault, path, text, Colour::Ansi);
-    drawn.push('\n');
-    drawn
-}
-
-pub fn estimate(_joint: &Joint, _options: &Options) -> Result<Estimate, Trouble> {
-    not_built()
-}
-
-pub fn torque_sweep(_joint: &Joint, _options: &SweepOptions) -> Result<TorqueSweep, Trouble> {
-    not_built()
-}
-
-pub fn field_map(_joint: &Joint, _columns: usize) -> Result<FieldMap, Trouble> {
-    not_built()
-}
-
-pub fn ring_tables(_joint: &Joint) -> Result<Vec<Vec<RingRow>>, Trouble> {
-    not_built()
+impl From<Failure> for Trouble {
+    fn from(failure: Failure) -> Self {
+        match failure {
+            // The joint is sound; what was asked of it is not.
+            Failure::NoSuchGroup { .. }
+            | Failure::NotByTorque { .. }
+            | Failure::SweepRange { .. } => Self::Usage {
+                message: failure.to_string(),
+                help: None,
+            },
+            _ => Self::Failure(failure.to_string()),
+        }
+    }
 }
 
 /// A torque from the command line, N m.
@@ -79,18 +58,44 @@ pub fn torque(text: &str) -> Result<f64, String> {
     })
 }
 
-pub fn schema() -> serde_json::Value {
-    serde_json::Value::Null
-}
-
 /// The name that was probably meant.
 pub fn nearest(name: &str, known: &[String]) -> Option<String> {
     diagnostic::nearest(name, known.iter().map(String::as_str))
 }
 
+/// The whole catalogue, in the order of the chain.
 pub fn listings() -> Vec<Listing> {
-    let _: Option<catalog::Material> = None;
-    Vec::new()
+    vec![
+        catalogue::materials(catalog::materials()),
+        catalogue::finishes(catalog::finishes()),
+        catalogue::platings(catalog::platings()),
+        catalogue::threads(catalog::threads()),
+        catalogue::holes(catalog::clearance_holes()),
+        catalogue::heads(catalog::seats()),
+        catalogue::grades(catalog::grades()),
+        catalogue::friction(catalog::friction()),
+        catalogue::methods(catalog::methods()),
+        catalogue::gases(catalog::gases()),
+        catalogue::fillers(catalog::fillers()),
+    ]
+}
+
+/// Everything known about one record, where its kind has records of one name each.
+pub fn card((kind, name): (&str, &str)) -> Option<String> {
+    let kind = match kind {
+        "materials" => Kind::Materials,
+        "finishes" => Kind::Finishes,
+        "platings" => Kind::Platings,
+        "threads" => Kind::Threads,
+        "friction" => Kind::Friction,
+        "methods" => Kind::Tightening,
+        "gases" => Kind::Gases,
+        "fillers" => Kind::Fillers,
+        _ => return None,
+    };
+    let table = catalog::table(kind);
+    let row = table.rows.iter().find(|row| row[0] == name)?;
+    Some(listing::card(&table.columns, row))
 }
 
 /// A drawing as a file of the format.

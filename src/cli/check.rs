@@ -2,12 +2,11 @@
 
 use crate::{
     cli::{
-        chain,
         console::{Console, Layout, Outcome, Trouble},
         input::{self, Source},
     },
-    diagnostic::Fault,
-    joint::Joint,
+    diagnostic::{Colour, Fault},
+    joint::{self, Faults, Joint},
     report::listing,
 };
 use clap::Args;
@@ -36,7 +35,7 @@ impl Check {
         for path in &self.files {
             outcomes.push(match read(path, &[], console) {
                 Ok((source, _)) if self.json => {
-                    console.json(&listing::faults(&source.name, &source.text, &[]), layout)?;
+                    console.json(&listing::accepted(&source.name), layout)?;
                     Outcome::Done
                 }
                 Ok((source, joint)) => {
@@ -60,26 +59,33 @@ impl Check {
 /// A joint file that was not accepted.
 pub struct Refused {
     name: String,
-    text: String,
-    faults: Vec<Fault>,
+    faults: Faults,
 }
 
 impl Refused {
-    /// The faults as JSON.
-    pub fn json(&self) -> serde_json::Value {
-        listing::faults(&self.name, &self.text, &self.faults)
+    /// A file that could not even be read.
+    fn unread(path: &Path, fault: Fault) -> Self {
+        Self {
+            name: input::name(path),
+            faults: Faults {
+                sources: vec![(String::new(), String::new())],
+                faults: vec![(0, fault)],
+            },
+        }
     }
 
-    /// The faults drawn into the text they are in.
+    /// The faults as JSON.
+    pub fn json(&self) -> serde_json::Value {
+        listing::faults(&self.name, &self.faults)
+    }
+
+    /// The faults drawn into the text they are in. Colour is always there; the console strips it.
     pub fn trouble(&self) -> Trouble {
-        let drawn: Vec<String> = self
-            .faults
-            .iter()
-            .map(|fault| chain::shown(fault, &self.name, &self.text))
-            .collect();
-        let mut text = drawn.join("\n");
-        if self.faults.len() > 1 {
-            let _ = writeln!(text, "\n{} faults in {}", self.faults.len(), self.name);
+        let mut text = self.faults.shown(&self.name, Colour::Ansi);
+        text.push('\n');
+        let count = self.faults.faults.len();
+        if count > 1 {
+            let _ = writeln!(text, "\n{count} faults in {}", self.name);
         }
         Trouble::Faults(text)
     }
@@ -94,16 +100,11 @@ pub fn read(
     if input::waits_for_keyboard(path) {
         console.message("reading a joint from the keyboard; end it with Ctrl-D\n");
     }
-    let source = input::read(path).map_err(|fault| Refused {
-        name: input::name(path),
-        text: String::new(),
-        faults: vec![fault],
-    })?;
-    match chain::read(&source.text, sets) {
+    let source = input::read(path).map_err(|fault| Refused::unread(path, fault))?;
+    match joint::read_with(&source.text, sets) {
         Ok(joint) => Ok((source, joint)),
-        Err((text, faults)) => Err(Refused {
+        Err(faults) => Err(Refused {
             name: source.name,
-            text,
             faults,
         }),
     }

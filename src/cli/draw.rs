@@ -2,12 +2,12 @@
 
 use crate::{
     cli::{
-        chain::{self, Options},
-        check,
+        chain, check,
         console::{Console, Outcome, Trouble},
         drawings,
         output::{Existing, Target},
     },
+    estimate::Options,
     figures::Format,
 };
 use clap::{Args, ValueEnum};

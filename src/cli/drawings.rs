@@ -85,7 +85,10 @@ fn bolts(joint: &Joint, nominal: &Estimate) -> Vec<PlanBolt> {
 fn curves(rings: &[Vec<RingRow>]) -> Vec<Curve> {
     let mut groups: Vec<(usize, usize)> = Vec::new();
     for (index, table) in rings.iter().enumerate() {
-        match groups.iter_mut().find(|(first, _)| rings[*first] == *table) {
+        match groups
+            .iter_mut()
+            .find(|(first, _)| like(&rings[*first], table))
+        {
             Some((_, count)) => *count += 1,
             None => groups.push((index, 1)),
         }
@@ -93,7 +96,7 @@ fn curves(rings: &[Vec<RingRow>]) -> Vec<Curve> {
     groups
         .into_iter()
         .map(|(first, count)| {
-            let table = &rings[first];
+            let table = gathered(&rings[first]);
             let hole = table.first().map(|ring| (ring.radius[0], 0.0));
             Curve {
                 label: match count {
@@ -108,6 +111,25 @@ fn curves(rings: &[Vec<RingRow>]) -> Vec<Curve> {
             }
         })
         .collect()
+}
+
+/// Whether two bolts are drawn as one curve: mirror images differ in their last digits.
+fn like(one: &[RingRow], other: &[RingRow]) -> bool {
+    let near = |one: f64, other: f64| (one - other).abs() <= 1e-6 * one.abs().max(other.abs());
+    one.len() == other.len()
+        && one.iter().zip(other).all(|(one, other)| {
+            near(one.radius[1], other.radius[1]) && near(one.cumulative, other.cumulative)
+        })
+}
+
+/// The rings up to where nothing more is gathered, and a little of the level part.
+fn gathered(table: &[RingRow]) -> &[RingRow] {
+    let total = table.last().map_or(0.0, |ring| ring.cumulative);
+    let Some(full) = table.iter().find(|ring| ring.cumulative >= 0.999 * total) else {
+        return table;
+    };
+    let end = table.partition_point(|ring| ring.radius[1] <= 1.5 * full.radius[1]);
+    &table[..end]
 }
 
 /// Radii of the fastener, where all bolts are of one kind.

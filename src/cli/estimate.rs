@@ -2,12 +2,11 @@
 
 use crate::{
     cli::{
-        chain::{self, Options},
-        check,
+        chain, check,
         console::{Console, Layout, Outcome, Trouble},
         input,
     },
-    estimate::{self, RingRow},
+    estimate::{self, Options, RingRow},
     report::{
         json,
         text::{self, Detail},
@@ -41,9 +40,12 @@ pub struct Estimate {
     /// Override a field: --set 'plate.box.thickness="6 mm"'
     #[arg(long = "set", value_name = "KEY=VALUE")]
     sets: Vec<String>,
-    /// Leave out the list of assumptions
+    /// Shorter: count the assumptions, name the lesser cautions by code
     #[arg(long)]
     brief: bool,
+    /// Longer: every caution in full, every assumption with its reason
+    #[arg(long, conflicts_with = "brief")]
+    full: bool,
     /// Add the rings around every bolt
     #[arg(long)]
     rings: bool,
@@ -65,6 +67,16 @@ pub struct Draws {
     /// Seed of the draws
     #[arg(long, value_name = "N", default_value_t = 1)]
     pub seed: u64,
+}
+
+impl Draws {
+    /// The same for the chain.
+    pub fn options(self) -> Options {
+        Options {
+            draws: self.draws,
+            seed: self.seed,
+        }
+    }
 }
 
 /// The fields of this build.
@@ -109,11 +121,7 @@ impl Estimate {
                 return Err(refused.trouble());
             }
         };
-        let options = Options {
-            draws: self.draws.draws,
-            seed: self.draws.seed,
-        };
-        let found = chain::estimate(&joint, &options).and_then(|estimate| {
+        let found = chain::estimate(&joint, &self.draws.options()).and_then(|estimate| {
             let rings = if self.rings {
                 chain::ring_tables(&joint)?
             } else {
@@ -158,10 +166,10 @@ impl Estimate {
             console.json(&object, Layout::of_batch(self.files.len()))?;
             return Ok(());
         }
-        let detail = if self.brief {
-            Detail::Brief
-        } else {
-            Detail::Full
+        let detail = match (self.brief, self.full) {
+            (true, _) => Detail::Brief,
+            (false, true) => Detail::Full,
+            (false, false) => Detail::Screen,
         };
         let mut report = text::painted(&text::estimate_at(estimate, detail));
         report.push_str(&text::rings(rings));

@@ -43,10 +43,7 @@ impl Explain {
             }
             return Ok(Outcome::Done);
         };
-        let Some(found) = entries
-            .iter()
-            .find(|entry| entry.code.eq_ignore_ascii_case(code.trim()))
-        else {
+        let Some(found) = registry::entry(&code.trim().to_lowercase()) else {
             let known: Vec<String> = entries.iter().map(|entry| entry.code.to_owned()).collect();
             return Err(Trouble::usage(
                 format!("there is no code `{code}`"),

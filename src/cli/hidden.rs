@@ -1,8 +1,11 @@
 //! Commands for packagers and editors: completions, manual pages, the schema of the joint file.
 
-use crate::cli::{
-    Cli, chain,
-    console::{Console, Layout, Outcome, Trouble},
+use crate::{
+    cli::{
+        Cli,
+        console::{Console, Layout, Outcome, Trouble},
+    },
+    joint,
 };
 use clap::{Args, CommandFactory};
 
@@ -59,7 +62,7 @@ pub struct Schema {}
 impl Schema {
     /// Prints the schema.
     pub fn run(console: &mut Console) -> Result<Outcome, Trouble> {
-        console.json(&chain::schema(), Layout::Indented)?;
+        console.json(&joint::schema(), Layout::Indented)?;
         Ok(Outcome::Done)
     }
 }

@@ -56,7 +56,7 @@ pub fn read(path: &Path) -> Result<Source, Fault> {
     } else {
         if path.is_dir() {
             return Err(fault(
-                "file/unreadable",
+                "file/not-found",
                 format!("`{name}` is a folder, not a joint file"),
                 joints(path)
                     .first()
@@ -122,7 +122,7 @@ fn unreadable(path: &Path, found: &io::Error) -> Fault {
         );
     }
     fault(
-        "file/unreadable",
+        "file/not-found",
         format!("`{name}` cannot be read: {found}"),
         None,
     )
@@ -159,7 +159,7 @@ fn joints(folder: &Path) -> Vec<String> {
 }
 
 fn not_utf8(name: &str, bytes: &[u8]) -> Fault {
-    let help = "save it as UTF-8; µ and · may also be written u and *".to_owned();
+    let help = "save it as UTF-8; `um`, `degC` and `N*m` need no special signs".to_owned();
     if bytes.starts_with(&[0xFF, 0xFE]) || bytes.starts_with(&[0xFE, 0xFF]) {
         return fault(
             "file/not-utf8",

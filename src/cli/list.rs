@@ -28,7 +28,7 @@ impl List {
     /// Lists the kinds, one kind, or whatever answers to the words.
     pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
         let all = chain::listings();
-        let Some(first) = self.kind else {
+        let Some(first) = self.kind.filter(|word| !word.trim().is_empty()) else {
             if self.json {
                 console.json(&listing::json(&all), Layout::Indented)?;
             } else {
@@ -66,10 +66,21 @@ impl List {
         if self.json {
             console.json(&listing::json(&chosen), Layout::Indented)?;
         } else {
-            let tables: Vec<String> = chosen.iter().map(listing::text).collect();
-            console.result(&tables.join("\n"))?;
+            let told = single(&chosen).and_then(chain::card).unwrap_or_else(|| {
+                let tables: Vec<String> = chosen.iter().map(listing::text).collect();
+                tables.join("\n")
+            });
+            console.result(&told)?;
         }
         Ok(Outcome::Done)
+    }
+}
+
+/// The one record that is left, with its kind.
+fn single(chosen: &[Listing]) -> Option<(&'static str, &str)> {
+    match chosen {
+        [only] if only.items.len() == 1 => Some((only.kind, only.items[0].cells.first()?)),
+        _ => None,
     }
 }
 
@@ -77,16 +88,17 @@ fn kinds(all: &[Listing]) -> String {
     let rows: Vec<Vec<String>> = all
         .iter()
         .map(|each| {
-            let some: Vec<&str> = each
+            let mut some: Vec<&str> = each
                 .items
                 .iter()
-                .take(4)
                 .filter_map(|item| item.cells.first().map(String::as_str))
                 .collect();
+            some.dedup();
+            some.truncate(4);
             vec![
                 each.kind.to_owned(),
                 each.items.len().to_string(),
-                some.join(", "),
+                some.join("; "),
             ]
         })
         .collect();

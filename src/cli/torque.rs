@@ -2,14 +2,14 @@
 
 use crate::{
     cli::{
-        chain::{self, SweepOptions},
-        check,
+        chain, check,
         console::{Console, Layout, Outcome, Trouble},
         estimate::Draws,
         output::{Existing, Target},
     },
     figures::{Drawing, Format},
     report::{json, sweep},
+    uncertainty::SweepOptions,
 };
 use clap::Args;
 use std::path::{Path, PathBuf};
@@ -84,8 +84,7 @@ impl Torque {
             from: self.from,
             to: self.to,
             steps: self.steps as usize,
-            draws: self.draws.draws,
-            seed: self.draws.seed,
+            chain: self.draws.options(),
         };
         let found = chain::torque_sweep(&joint, &options)?;
         if let Some((format, target)) = figure {

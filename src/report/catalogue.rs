@@ -4,13 +4,13 @@ mod fasteners;
 mod media;
 mod plates;
 
-pub use fasteners::{friction, grades, holes, methods, seats, threads};
+pub use fasteners::{friction, grades, heads, holes, methods, threads};
 pub use media::{fillers, gases, platings};
 pub use plates::{finishes, materials};
 
 use crate::{
     catalog::{Datum, Status},
-    report::{number::four, table::Side},
+    report::{number::brief, table::Side},
 };
 use serde_json::{Value, json};
 
@@ -31,7 +31,7 @@ fn shown(datum: &Datum, unit: f64) -> String {
     } else {
         ""
     };
-    format!("{}{mark}", four(datum.value / unit))
+    format!("{}{mark}", brief(datum.value / unit))
 }
 
 /// The same, or a dash.
@@ -63,11 +63,13 @@ fn status(status: Status) -> &'static str {
     }
 }
 
-/// A star after a name whose whole record is from memory.
-fn starred(name: &str, of: Status) -> String {
-    if of == Status::Memory {
-        format!("{name}*")
-    } else {
-        name.to_owned()
-    }
+/// A bare value, with a star when its record is from memory.
+fn starred(value: f64, of: Status) -> String {
+    let mark = if of == Status::Memory { "*" } else { "" };
+    format!("{}{mark}", brief(value))
+}
+
+/// A value, or a dash.
+fn brief_if(value: Option<f64>) -> String {
+    value.map_or_else(|| "–".to_owned(), brief)
 }

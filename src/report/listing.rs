@@ -1,11 +1,12 @@
 //! Lists of things by name: catalogue records, codes, faults; as text and as JSON.
 
 use crate::{
-    diagnostic::Fault,
+    joint::Faults,
     report::{
         json::FORMAT,
-        number::plain,
+        number::{plain, wrapped},
         table::{Side, aligned},
+        text::WIDTH,
     },
 };
 use serde_json::{Value, json};
@@ -26,7 +27,7 @@ pub struct Listing {
 pub struct Item {
     /// Cells in the order of the headings.
     pub cells: Vec<String>,
-    /// Words a filter also looks at: aliases, notes, standards.
+    /// Names a filter also looks at, with `|` between them, so that no match runs across two.
     pub keywords: String,
     /// The whole record in SI.
     pub record: Value,
@@ -35,7 +36,8 @@ pub struct Item {
 impl Item {
     /// Whether every word occurs in this record; case, spaces and dashes do not matter.
     pub fn answers(&self, words: &[String]) -> bool {
-        let hay = folded(&format!("{} {}", self.cells.join(" "), self.keywords));
+        // No match may run from one cell into the next.
+        let hay = folded(&format!("{}|{}", self.cells.join("|"), self.keywords));
         words.iter().all(|word| hay.contains(&folded(word)))
     }
 }
@@ -53,7 +55,7 @@ pub fn text(listing: &Listing) -> String {
     let rows: Vec<Vec<String>> = listing
         .items
         .iter()
-        .map(|item| item.cells.iter().map(|cell| plain(cell)).collect())
+        .map(|item| item.cells.iter().map(|cell| lines(cell)).collect())
         .collect();
     let starred = rows.iter().flatten().any(|cell| cell.ends_with('*'));
     format!(
@@ -69,6 +71,33 @@ pub fn text(listing: &Listing) -> String {
     )
 }
 
+/// A cell keeps its own line breaks.
+fn lines(cell: &str) -> String {
+    let lines: Vec<String> = cell.lines().map(plain).collect();
+    lines.join("\n")
+}
+
+/// One record with everything known about it, a line to each heading that has a value.
+pub fn card(headings: &[&str], row: &[String]) -> String {
+    let label = headings
+        .iter()
+        .map(|each| each.chars().count())
+        .max()
+        .unwrap_or(0)
+        + 2;
+    let mut text = String::new();
+    for (heading, value) in headings.iter().zip(row) {
+        if value.is_empty() || value == "–" {
+            continue;
+        }
+        let gap = " ".repeat(label - heading.chars().count());
+        let body = wrapped(&plain(value), WIDTH - label, 0)
+            .replace('\n', &format!("\n{}", " ".repeat(label)));
+        text.extend([heading, gap.as_str(), body.as_str(), "\n"]);
+    }
+    text
+}
+
 /// The listings as one JSON object, records by kind.
 pub fn json(listings: &[Listing]) -> Value {
     let mut kinds = serde_json::Map::new();
@@ -79,15 +108,23 @@ pub fn json(listings: &[Listing]) -> Value {
     json!({ "ringsum": env!("CARGO_PKG_VERSION"), "format": FORMAT, "kinds": kinds })
 }
 
-/// The faults of one file, with line and column counted from 1; `ok` when there are none.
-pub fn faults(path: &str, text: &str, faults: &[Fault]) -> Value {
-    let list: Vec<Value> = faults
+/// A file without faults.
+pub fn accepted(path: &str) -> Value {
+    checked(path, &[])
+}
+
+/// The faults of one file, with line and column counted from 1. A fault in an override names the
+/// override as its file.
+pub fn faults(path: &str, found: &Faults) -> Value {
+    let list: Vec<Value> = found
+        .faults
         .iter()
-        .map(|fault| {
+        .map(|(source, fault)| {
+            let (name, text) = &found.sources[*source];
             let (line, column) = place(text, fault.span.start);
             json!({
                 "code": fault.code,
-                "file": path,
+                "file": if name.is_empty() { path } else { name },
                 "line": line,
                 "column": column,
                 "message": fault.message,
@@ -96,12 +133,16 @@ pub fn faults(path: &str, text: &str, faults: &[Fault]) -> Value {
             })
         })
         .collect();
+    checked(path, &list)
+}
+
+fn checked(path: &str, faults: &[Value]) -> Value {
     json!({
         "ringsum": env!("CARGO_PKG_VERSION"),
         "format": FORMAT,
         "file": path,
         "ok": faults.is_empty(),
-        "faults": list,
+        "faults": faults,
     })
 }
 
@@ -136,11 +177,12 @@ mod tests {
     fn a_filter_ignores_case_spaces_and_dashes() {
         let item = Item {
             cells: vec!["Al 6061-T6".to_owned()],
-            keywords: "EN AW-6061 T6".to_owned(),
+            keywords: "EN AW-6061 T6|6061".to_owned(),
             record: Value::Null,
         };
         assert!(item.answers(&["al6061 t6".to_owned()]));
         assert!(item.answers(&["AL".to_owned(), "aw".to_owned()]));
         assert!(!item.answers(&["AL".to_owned(), "7075".to_owned()]));
+        assert!(!item.answers(&["T6 6061".to_owned()]), "across two names");
     }
 }

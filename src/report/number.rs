@@ -31,6 +31,16 @@ pub fn four(value: f64) -> String {
     }
 }
 
+/// At most four significant digits without the zeros that follow: for values given in round numbers.
+pub fn brief(value: f64) -> String {
+    let text = four(value);
+    if text.contains('.') && !text.contains('e') {
+        text.trim_end_matches('0').trim_end_matches('.').to_owned()
+    } else {
+        text
+    }
+}
+
 /// Four significant digits, or a dash where there is no value.
 pub fn optional(value: Option<f64>) -> String {
     value.map_or_else(|| "–".to_owned(), four)
@@ -107,6 +117,19 @@ pub fn wrapped(text: &str, width: usize, indent: usize) -> String {
     lines
 }
 
+/// The text on one line of at most `width` characters, with `…` where the rest is cut off.
+pub fn cut(text: &str, width: usize) -> String {
+    if text.chars().count() <= width {
+        return text.to_owned();
+    }
+    let kept: String = text.chars().take(width.saturating_sub(1)).collect();
+    // A half word reads as another word; one long word has no better place to end.
+    let kept = kept
+        .rsplit_once(' ')
+        .map_or(kept.as_str(), |(whole, _)| whole);
+    format!("{kept}…")
+}
+
 #[cfg(test)]
 mod tests {
     use super::*;
@@ -127,6 +150,18 @@ mod tests {
             (f64::INFINITY, "–"),
         ] {
             assert_eq!(four(value), shown, "{value}");
+        }
+    }
+
+    #[test]
+    fn round_values_print_without_zeros() {
+        for (value, shown) in [
+            (167.0, "167"),
+            (0.2, "0.2"),
+            (1200.0, "1200"),
+            (2.54, "2.54"),
+        ] {
+            assert_eq!(brief(value), shown);
         }
     }
 
@@ -153,6 +188,13 @@ mod tests {
         assert!(lines.lines().all(|line| line.chars().count() <= 20));
         assert_eq!(lines.split_whitespace().count(), 12);
         assert!(lines.lines().skip(1).all(|line| line.starts_with("    ")));
+    }
+
+    #[test]
+    fn cut_text_ends_at_a_word_within_the_width() {
+        assert_eq!(cut("short", 5), "short");
+        assert_eq!(cut("force of a bolt", 10), "force of…");
+        assert_eq!(cut("µµµµµµµµ", 4), "µµµ…");
     }
 
     #[test]

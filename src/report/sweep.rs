@@ -6,7 +6,7 @@ use crate::{
     report::{
         number::{band, four, percent, plain},
         table::{Side, aligned},
-        text::cautions,
+        text::{Detail, cautions},
     },
 };
 use std::fmt::Write;
@@ -14,7 +14,7 @@ use std::fmt::Write;
 /// The sweep as a table with the stated, the best and the largest torque marked.
 pub fn torque(sweep: &TorqueSweep) -> String {
     let stated = nearest(sweep, sweep.stated);
-    let best = nearest(sweep, sweep.best);
+    let best = best(sweep);
     let rows: Vec<Vec<String>> = sweep
         .points
         .iter()
@@ -67,11 +67,7 @@ pub fn torque(sweep: &TorqueSweep) -> String {
             four(torque)
         );
     }
-    let _ = writeln!(
-        text,
-        "best     {} N·m: lowest source to sink within this range",
-        four(sweep.best)
-    );
+    text.push_str(&advice(sweep, best));
     if let Some((resistance, bound)) = sweep.required {
         let side = match bound {
             Limit::Most => "at most",
@@ -83,12 +79,31 @@ pub fn torque(sweep: &TorqueSweep) -> String {
             four(resistance)
         );
     }
-    let told = cautions(&sweep.cautions);
+    let told = cautions(&sweep.cautions, Detail::Screen);
     if !told.is_empty() {
         text.push('\n');
         text.push_str(&told);
     }
     text
+}
+
+/// The torque of the lowest resistance among those that strength allows.
+pub fn best(sweep: &TorqueSweep) -> Option<usize> {
+    let resistance = |index: &usize| sweep.points[*index].source_to_sink.nominal;
+    (0..sweep.points.len())
+        .filter(|index| sweep.points[*index].passes)
+        .min_by(|one, other| resistance(one).total_cmp(&resistance(other)))
+}
+
+/// What the sweep says about the best torque; never one beyond strength.
+fn advice(sweep: &TorqueSweep, best: Option<usize>) -> String {
+    match best {
+        None => "best     no torque of this range passes every strength limit\n".to_owned(),
+        Some(index) => format!(
+            "best     {} N·m: lowest source to sink of the torques that strength allows here\n",
+            four(sweep.points[index].torque)
+        ),
+    }
 }
 
 fn row(point: &TorquePoint, marks: &str) -> Vec<String> {

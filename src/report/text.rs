@@ -1,10 +1,13 @@
 //! The result of `estimate` for an engineer at a terminal: one screen, units in headings.
 
 use crate::{
-    diagnostic::{Assumption, Caution},
+    diagnostic::{
+        Assumption, Caution,
+        registry::{Gravity, gravity},
+    },
     estimate::{BoltResult, CaseResult, Estimate, RingRow},
     report::{
-        number::{band, four, optional, percent, plain, wrapped},
+        number::{band, cut, four, optional, percent, plain, wrapped},
         table::{Side, aligned},
     },
 };
@@ -19,15 +22,17 @@ pub const WIDTH: usize = 100;
 /// How much of the report is told.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub enum Detail {
-    /// Everything, with every assumption.
+    /// One screen: cautions that are not grave are cut to a line, assumptions given without reason.
+    Screen,
+    /// Everything in full.
     Full,
-    /// Assumptions are counted, not listed.
+    /// Assumptions are counted, and cautions that are not grave named by their codes.
     Brief,
 }
 
-/// The whole report.
+/// The report on one screen.
 pub fn estimate(estimate: &Estimate) -> String {
-    estimate_at(estimate, Detail::Full)
+    estimate_at(estimate, Detail::Screen)
 }
 
 /// The report, as long as asked for.
@@ -42,7 +47,7 @@ pub fn estimate_at(estimate: &Estimate, detail: Detail) -> String {
         }
         parts.push(thermal::drivers(&case.drivers));
     }
-    parts.push(cautions(&estimate.cautions));
+    parts.push(cautions(&estimate.cautions, detail));
     parts.push(assumptions(&estimate.assumptions, detail));
     parts.retain(|part| !part.is_empty());
     parts.join("\n")
@@ -168,50 +173,72 @@ fn groups(bolts: &[BoltResult]) -> Vec<(String, Vec<&BoltResult>)> {
         .collect()
 }
 
-/// Cautions, most grave first, each with its code for `explain`.
-pub fn cautions(cautions: &[Caution]) -> String {
+/// Cautions, most grave first, each with its code for `explain`. The grave ones are always told
+/// in full; the others are cut to a line, or to their codes where brevity is asked for.
+pub fn cautions(cautions: &[Caution], detail: Detail) -> String {
     if cautions.is_empty() {
         return String::new();
     }
     let mut text = format!(
-        "cautions ({}); ringsum explain CODE tells more\n",
+        "cautions ({}), grave first; ringsum explain CODE tells what to do\n",
         cautions.len()
     );
-    for caution in cautions {
-        let line = format!("{}: {}", caution.code, plain(&caution.text));
-        let _ = writeln!(
-            text,
-            "  {}",
-            wrapped(&line, WIDTH - 2, 2).replace('\n', "\n  ")
-        );
+    let (grave, others): (Vec<&Caution>, Vec<&Caution>) = cautions
+        .iter()
+        .partition(|caution| gravity(caution.code) == Gravity::Grave);
+    let line = |caution: &Caution| format!("{}: {}", caution.code, plain(&caution.text));
+    let whole = |caution: &Caution| wrapped(&line(caution), WIDTH - 2, 2).replace('\n', "\n  ");
+    for caution in grave {
+        let _ = writeln!(text, "  {}", whole(caution));
+    }
+    match detail {
+        Detail::Full => {
+            for caution in others {
+                let _ = writeln!(text, "  {}", whole(caution));
+            }
+        }
+        Detail::Screen => {
+            for caution in others {
+                let _ = writeln!(text, "  {}", cut(&line(caution), WIDTH - 2));
+            }
+        }
+        Detail::Brief => {
+            let codes: Vec<&str> = others.iter().map(|caution| caution.code).collect();
+            if !codes.is_empty() {
+                let told = wrapped(&codes.join(", "), WIDTH - 2, 0).replace('\n', "\n  ");
+                let _ = writeln!(text, "  {told}");
+            }
+        }
     }
     text
 }
 
+/// Assumptions: counted, with their values, or with their values and reasons.
 fn assumptions(assumptions: &[Assumption], detail: Detail) -> String {
-    match (assumptions.len(), detail) {
-        (0, _) => return String::new(),
-        (count, Detail::Brief) => return format!("assumptions: {count}, listed without --brief\n"),
-        (_, Detail::Full) => {}
+    let count = assumptions.len();
+    if count == 0 {
+        return String::new();
     }
-    let mut text = format!(
-        "assumptions ({}); state a field in the file to replace one\n",
-        assumptions.len()
-    );
-    for each in assumptions {
-        let line = format!(
-            "{} = {}: {}",
-            each.field,
-            plain(&each.value),
-            plain(&each.why)
-        );
-        let _ = writeln!(
-            text,
-            "  {}",
-            wrapped(&line, WIDTH - 2, 2).replace('\n', "\n  ")
-        );
+    let stated = |each: &Assumption| format!("{} = {}", plain(&each.field), plain(&each.value));
+    match detail {
+        Detail::Brief => format!("assumptions: {count}, listed without --brief\n"),
+        Detail::Screen => {
+            let all: Vec<String> = assumptions.iter().map(stated).collect();
+            let told = wrapped(&all.join("; "), WIDTH - 2, 0).replace('\n', "\n  ");
+            format!(
+                "assumptions ({count}), to be replaced in the file; --full tells why\n  {told}\n"
+            )
+        }
+        Detail::Full => {
+            let mut text = format!("assumptions ({count}), to be replaced in the file\n");
+            for each in assumptions {
+                let line = format!("{}: {}", stated(each), plain(&each.why));
+                let told = wrapped(&line, WIDTH - 2, 2).replace('\n', "\n  ");
+                let _ = writeln!(text, "  {told}");
+            }
+            text
+        }
     }
-    text
 }
 
 /// The report with colour for a terminal: headings bold, verdicts in green, yellow and red.

@@ -3,9 +3,9 @@
 use crate::{
     catalog::{ClearanceHole, FrictionRecord, Grade, MethodRecord, SeatRecord, Thread},
     report::{
-        catalogue::{datum, datum_if, numbers, shown, shown_if, starred, status, words},
+        catalogue::{brief_if, datum, datum_if, numbers, shown, shown_if, starred, status, words},
         listing::{Item, Listing},
-        number::{four, optional, percent, wrapped},
+        number::{brief, wrapped},
     },
 };
 use serde_json::json;
@@ -26,10 +26,10 @@ pub fn threads(records: &[Thread]) -> Listing {
             .map(|record| Item {
                 cells: vec![
                     record.name.clone(),
-                    four(record.diameter * 1e3),
-                    four(record.pitch * 1e3),
-                    four(record.pitch_diameter * 1e3),
-                    four(record.stress_area * 1e6),
+                    brief(record.diameter * 1e3),
+                    brief(record.pitch * 1e3),
+                    brief(record.pitch_diameter * 1e3),
+                    brief(record.stress_area * 1e6),
                 ],
                 keywords: if record.inch {
                     "inch unified"
@@ -94,9 +94,9 @@ pub fn grades(records: &[Grade]) -> Listing {
 }
 
 /// Heads, nuts and washers as seats.
-pub fn seats(records: &[SeatRecord]) -> Listing {
+pub fn heads(records: &[SeatRecord]) -> Listing {
     Listing {
-        kind: "seats",
+        kind: "heads",
         headings: vec![
             words("kind"),
             words("thread"),
@@ -109,14 +109,14 @@ pub fn seats(records: &[SeatRecord]) -> Listing {
             .iter()
             .map(|record| Item {
                 cells: vec![
-                    starred(&record.kind, record.status),
+                    record.kind.clone(),
                     record.thread.clone(),
                     record.standard.clone(),
-                    four(record.outer * 1e3),
-                    optional(record.inner.map(|inner| inner * 1e3)),
-                    optional(record.height.map(|height| height * 1e3)),
+                    starred(record.outer * 1e3, record.status),
+                    brief_if(record.inner.map(|inner| inner * 1e3)),
+                    brief_if(record.height.map(|height| height * 1e3)),
                 ],
-                keywords: "head".to_owned(),
+                keywords: "seat".to_owned(),
                 record: json!({
                     "kind": record.kind,
                     "standard": record.standard,
@@ -147,7 +147,7 @@ pub fn holes(records: &[ClearanceHole]) -> Listing {
             .iter()
             .map(|record| {
                 let mut cells = vec![record.thread.clone(), record.standard.clone()];
-                cells.extend(record.diameters.map(|diameter| four(diameter * 1e3)));
+                cells.extend(record.diameters.map(|diameter| brief(diameter * 1e3)));
                 Item {
                     cells,
                     keywords: String::new(),
@@ -181,8 +181,8 @@ pub fn friction(records: &[FrictionRecord]) -> Listing {
             .iter()
             .map(|record| {
                 let quantity = if record.nut_factor { "K" } else { "µ" };
-                let mut cells = vec![starred(&record.name, record.status), quantity.to_owned()];
-                cells.extend(record.values.map(four));
+                let mut cells = vec![record.name.clone(), quantity.to_owned()];
+                cells.extend(record.values.map(|value| starred(value, record.status)));
                 cells.push(wrapped(&record.describes, 44, 0));
                 Item {
                     cells,
@@ -215,17 +215,17 @@ pub fn methods(records: &[MethodRecord]) -> Listing {
         headings: vec![
             words("name"),
             words("family"),
-            numbers("scatter ±\nleast"),
-            numbers("scatter ±\nmost"),
+            numbers("least\n± %"),
+            numbers("most\n± %"),
         ],
         items: records
             .iter()
             .map(|record| Item {
                 cells: vec![
-                    starred(&record.name, record.status),
+                    record.name.clone(),
                     record.family.clone(),
-                    percent(record.scatter[0]),
-                    percent(record.scatter[1]),
+                    starred(record.scatter[0] * 100.0, record.status),
+                    starred(record.scatter[1] * 100.0, record.status),
                 ],
                 keywords: "tightening".to_owned(),
                 record: json!({

@@ -3,9 +3,9 @@
 use crate::{
     catalog::{FillerRecord, Gas, Plating},
     report::{
-        catalogue::{datum, datum_if, numbers, shown, shown_if, starred, status, words},
+        catalogue::{datum, datum_if, numbers, shown, shown_if, status, words},
         listing::{Item, Listing},
-        number::four,
+        number::brief,
     },
 };
 use serde_json::json;
@@ -35,9 +35,9 @@ fn gas(record: &Gas) -> Item {
         .min_by(|one, other| distance(one).total_cmp(&distance(other)));
     let near = |table: &[f64], unit: f64| {
         let value = nearest.and_then(|index| table.get(index));
-        four(value.map_or(f64::NAN, |value| value / unit))
+        brief(value.map_or(f64::NAN, |value| value / unit))
     };
-    let end = |value: Option<&f64>| four(value.copied().unwrap_or(f64::NAN));
+    let end = |value: Option<&f64>| brief(value.copied().unwrap_or(f64::NAN));
     Item {
         cells: vec![
             record.name.clone(),
@@ -87,17 +87,13 @@ pub fn fillers(records: &[FillerRecord]) -> Listing {
                 }
                 Item {
                     cells: vec![
-                        starred(&record.name, record.status),
+                        record.name.clone(),
                         record.model.clone(),
                         shown(&record.conductivity, 1.0),
                         shown_if(record.thickness.as_ref(), 1e-6),
                         mind.join(", "),
                     ],
-                    keywords: format!(
-                        "{} {}",
-                        record.aliases.join(" "),
-                        record.note.as_deref().unwrap_or("")
-                    ),
+                    keywords: record.aliases.join("|"),
                     record: json!({
                         "name": record.name,
                         "aliases": record.aliases,
@@ -105,6 +101,7 @@ pub fn fillers(records: &[FillerRecord]) -> Listing {
                         "conductivity": datum(&record.conductivity),
                         "yield_stress": datum_if(record.yield_stress.as_ref()),
                         "thickness": datum_if(record.thickness.as_ref()),
+                        "thinnest": datum_if(record.thinnest.as_ref()),
                         "points": record.points,
                         "creeps": record.creeps,
                         "silicone": record.silicone,
@@ -140,12 +137,7 @@ pub fn platings(records: &[Plating]) -> Listing {
                     shown_if(record.hardness.as_ref(), 1e6),
                     shown(&record.typical_thickness, 1e-6),
                 ],
-                keywords: format!(
-                    "{} {} {}",
-                    record.aliases.join(" "),
-                    record.family,
-                    record.note.as_deref().unwrap_or("")
-                ),
+                keywords: format!("{}|{}", record.aliases.join("|"), record.family),
                 record: json!({
                     "name": record.name,
                     "aliases": record.aliases,

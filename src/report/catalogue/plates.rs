@@ -5,7 +5,7 @@ use crate::{
     report::{
         catalogue::{datum, datum_if, numbers, shown, shown_if, words},
         listing::{Item, Listing},
-        number::four,
+        number::brief,
     },
 };
 use serde_json::{Value, json};
@@ -37,14 +37,9 @@ fn material(record: &Material) -> Item {
             shown(&record.expansion, 1e-6),
             shown_if(record.hardness.as_ref(), 1e6),
             shown_if(record.yield_strength.as_ref(), 1e6),
-            fit.map_or_else(|| "–".to_owned(), |fit| four(fit.valid[0])),
+            fit.map_or_else(|| "–".to_owned(), |fit| brief(fit.valid[0])),
         ],
-        keywords: format!(
-            "{} {} {}",
-            record.aliases.join(" "),
-            record.family,
-            record.note.as_deref().unwrap_or("")
-        ),
+        keywords: format!("{}|{}", record.aliases.join("|"), record.family),
         record: json!({
             "name": record.name,
             "aliases": record.aliases,
@@ -95,7 +90,7 @@ pub fn finishes(records: &[FinishRecord]) -> Listing {
             .map(|record| {
                 let range = record.roughness_average.range;
                 let end = |index: usize| {
-                    range.map_or_else(|| "–".to_owned(), |ends| four(ends[index] / 1e-6))
+                    range.map_or_else(|| "–".to_owned(), |ends| brief(ends[index] / 1e-6))
                 };
                 Item {
                     cells: vec![
@@ -105,11 +100,7 @@ pub fn finishes(records: &[FinishRecord]) -> Listing {
                         end(1),
                         shown(&record.flatness_per_100mm, 1e-6),
                     ],
-                    keywords: format!(
-                        "{} {}",
-                        record.aliases.join(" "),
-                        record.note.as_deref().unwrap_or("")
-                    ),
+                    keywords: record.aliases.join("|"),
                     record: json!({
                         "name": record.name,
                         "aliases": record.aliases,

@@ -94,17 +94,13 @@ fn scaled(case: &CaseResult) -> String {
 }
 
 fn bounds(case: &CaseResult) -> String {
+    let name = "bounds of source to sink, for this field at nominal inputs";
     match (case.resistance_lower, case.resistance_upper) {
         (None, None) => String::new(),
-        (Some(lower), None) => format!(
-            "bounds of source to sink for this field: at least {} K/W; no upper bound is proved\n",
-            four(lower)
-        ),
-        (lower, Some(upper)) => format!(
-            "bounds of source to sink for this field: {} to {} K/W\n",
-            optional(lower),
-            four(upper)
-        ),
+        (Some(lower), None) => {
+            format!("{name}: from {} K/W; no upper one is proved\n", four(lower))
+        }
+        (lower, Some(upper)) => format!("{name}: {} to {} K/W\n", optional(lower), four(upper)),
     }
 }
 
@@ -229,14 +225,21 @@ pub fn drivers(drivers: &[Driver]) -> String {
     }
     let mut text = "what drives the spread of source to sink\n".to_owned();
     // Below one part in a hundred nothing is worth a line.
-    for driver in drivers.iter().filter(|driver| driver.share >= 0.01).take(5) {
+    let told: Vec<&Driver> = drivers
+        .iter()
+        .filter(|driver| driver.share >= 0.01)
+        .take(5)
+        .collect();
+    let widest = told.iter().map(|driver| driver.input.chars().count()).max();
+    let name = widest.unwrap_or(0);
+    for driver in told {
         let line = format!(
-            "{:>4.0} %  {:<22}{}",
+            "{:>4.0} %  {:<name$}  {}",
             driver.share * 100.0,
             driver.input,
             driver.remedy
         );
-        let _ = writeln!(text, "{}", wrapped_after(&line, 30));
+        let _ = writeln!(text, "{}", wrapped_after(&line, name + 10));
     }
     text
 }
