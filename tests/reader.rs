@@ -38,6 +38,10 @@ fn near(value: f64, expected: f64) -> bool {
     (value - expected).abs() <= 1e-12 * expected.abs()
 }
 
+fn at(point: [f64; 2], expected: [f64; 2]) -> bool {
+    near(point[0], expected[0]) && near(point[1], expected[1])
+}
+
 const SERVICE: &str = "[service]\nmedium = \"vacuum\"\n";
 const PLATES: &str = "
 [[plate]]
@@ -91,7 +95,7 @@ fn the_first_reference_joint_becomes_what_it_says() {
     assert!(near(upper.finish.slope, 0.106_066));
     assert!(near(upper.material.conductivity.value, 167.0));
     assert!(near(upper.material.expansion.value, 23.6e-6));
-    assert_eq!(joint.cold().origin, [0.0, 0.0]);
+    assert!(at(joint.cold().origin, [0.0, 0.0]));
     assert_eq!(joint.sink, Sink::Film(2000.0));
     assert!(!joint.source.isothermal);
     assert_eq!(
@@ -126,7 +130,7 @@ fn concave_is_a_positive_bow() {
 fn a_round_plate_counts_from_its_centre() {
     let joint = read(&reference("round_single.toml"));
     assert_eq!(joint.warm().outline, Outline::Disc { radius: 0.03 });
-    assert_eq!(joint.cold().origin, [0.0, 0.0]);
+    assert!(at(joint.cold().origin, [0.0, 0.0]));
     assert_eq!(joint.sink, Sink::IsothermalBack);
     assert_eq!(joint.source.zone, Zone::Face);
 }
@@ -224,8 +228,8 @@ fn the_sketch_of_the_design_reads_whole() {
         "{roughness:?}"
     );
     assert!(roughness.low < roughness.nominal && roughness.nominal < roughness.high);
-    assert_eq!(joint.cold().origin, [-0.07, -0.09]);
-    assert_eq!(joint.contact.emissivity, [0.05, 0.2]);
+    assert!(at(joint.cold().origin, [-0.07, -0.09]));
+    assert!(at(joint.contact.emissivity, [0.05, 0.2]));
     assert!(
         matches!(joint.contact.cone, ConeRule::HalfAngle(angle) if near(angle, 30_f64.to_radians()))
     );
@@ -236,7 +240,7 @@ fn the_sketch_of_the_design_reads_whole() {
     assert_eq!(inserts.nut_seat, None);
     assert!(inserts.washer_thickness > 0.0);
     // ISO 7089 M4: 9 mm wide, 0.8 mm thick; ISO 4762 M4: dw 6.53 mm; the spread is the smaller.
-    assert!((inserts.head_seat.outer_radius - (6.53e-3 + 1.6 * 0.8e-3) / 2.0).abs() < 1e-5);
+    assert!((inserts.head_seat.outer_radius - f64::midpoint(6.53e-3, 1.6 * 0.8e-3)).abs() < 1e-5);
     assert!(inserts.friction_radius < inserts.head_seat.outer_radius);
     assert!(near(inserts.hole_radius[1], 2e-3));
     assert_eq!(tapped.engagement, Engagement::Tapped { length: 4e-3 });
