@@ -14,7 +14,7 @@ use crate::{
 pub struct Rings {
     /// Areas of the rings.
     pub columns: Columns,
-    /// 2π/ln(r_{j+1}/r_j) between ring centres on the equal-area circle; 0 where a ring is empty.
+    /// Between ring centres, conductance over conductivity and thickness; 0 beside an empty ring.
     pub shape: [Vec<f64>; 2],
     /// From each ring centre to the part of its outer edge where the plate ends: the angle lost to
     /// the next ring over ln(e/r).
@@ -146,7 +146,7 @@ pub fn shapes(hole_radius: f64, edges: &[f64], areas: &[f64]) -> (Vec<f64>, Vec<
 /// grow geometrically. Where contact reaches the rim all are equally wide.
 pub fn edges(hole_radius: f64, contact_radius: f64, rim_radius: f64, rings: usize) -> Vec<f64> {
     let (a, c) = (hole_radius, contact_radius);
-    if !(c < rim_radius * (1.0 - 1e-9)) {
+    if c >= rim_radius * (1.0 - 1e-9) {
         return (0..=rings)
             .map(|ring| a + (rim_radius - a) * ring as f64 / rings as f64)
             .collect();

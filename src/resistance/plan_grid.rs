@@ -232,8 +232,8 @@ impl PlanGrid {
         }
         self.columns.first_patch.push(self.columns.patch_area.len());
         self.columns.source_area.push(source);
-        for plate in 0..2 {
-            self.columns.plate_area[plate].push(areas[plate]);
+        for (plate, area) in areas.into_iter().enumerate() {
+            self.columns.plate_area[plate].push(area);
         }
     }
 
@@ -278,7 +278,9 @@ impl PlanGrid {
     fn settle(&mut self) {
         let scaled = |areas: &mut Vec<f64>, exact: f64| {
             let factor = exact / areas.iter().sum::<f64>();
-            areas.iter_mut().for_each(|area| *area *= factor);
+            for area in areas {
+                *area *= factor;
+            }
         };
         for plate in 0..2 {
             scaled(
