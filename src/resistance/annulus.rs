@@ -46,7 +46,7 @@ impl Annulus {
                 patch_area: area,
             },
             shape: [shape.clone(), shape],
-            rim_shape: [rim_shape; 2],
+            rim_shape: [rim_shape.clone(), rim_shape],
         }
     }
 

@@ -73,8 +73,8 @@ pub struct Flow {
 /// q_b z2/3 + q_i z2/6 + q_b/h_s                 = T2 − T_coolant     under a film
 /// ```
 ///
-/// z = t/k. With q_t and q_b eliminated the flux through the interface is
-/// q_i = U (α T1 − β T2 − (α − 1) T_source − fixed), U = 1/(1/h + base).
+/// z = t/k. With `q_t` and `q_b` eliminated the flux through the interface is
+/// `q_i = U (α T1 − β T2 − (α − 1) T_source − fixed)`, `U = 1/(1/h + base)`.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub(super) struct Column {
     /// Area resistance beside 1/h, m² K/W.

@@ -62,7 +62,7 @@ impl Cells {
 
     /// Area under pressure, m².
     pub fn contact_area(&self) -> f64 {
-        self.cells
+        self.fine
             .iter()
             .flat_map(|cell| {
                 let areas = &cell.rings.columns.patch_area;
@@ -75,7 +75,7 @@ impl Cells {
 
     /// Force carried by all patches, N.
     pub fn force_carried(&self, forces: &[f64]) -> f64 {
-        self.cells
+        self.fine
             .iter()
             .flat_map(|cell| (0..cell.edges.len() - 1).map(|ring| cell.ring_force(ring, forces)))
             .sum()
@@ -84,7 +84,7 @@ impl Cells {
     /// Distance from the nearest bolt axis that holds a share of the whole force, m.
     pub fn radius_holding(&self, share: f64, forces: &[f64]) -> f64 {
         let rings: Vec<(f64, f64, f64)> = self
-            .cells
+            .fine
             .iter()
             .flat_map(|cell| {
                 cell.edges
@@ -119,7 +119,7 @@ impl Cells {
 
     /// The rings around one bolt that lie on the faying faces, from the hole outward.
     pub fn rings<H: Fn(f64) -> f64>(&self, load: &Load<H>, bolt: usize) -> Vec<RingRow> {
-        let cell = &self.cells[bolt];
+        let cell = &self.fine[bolt];
         let mut cumulative = 0.0;
         let mut rows = Vec::new();
         for (ring, pair) in cell.edges.windows(2).enumerate() {

@@ -14,10 +14,11 @@ use crate::{
 pub struct Rings {
     /// Areas of the rings.
     pub columns: Columns,
-    /// 2π/ln(r_{j+1}/r_j) between ring centres on the equal-area circle; 0 where a ring is empty.
+    /// Between ring centres, conductance over conductivity and thickness; 0 beside an empty ring.
     pub shape: [Vec<f64>; 2],
-    /// 2π/ln(R/r) from the last ring centre of each plate to its rim; 0 where it has none.
-    pub rim_shape: [f64; 2],
+    /// From each ring centre to the part of its outer edge where the plate ends: the angle lost to
+    /// the next ring over ln(e/r).
+    pub rim_shape: [Vec<f64>; 2],
 }
 
 impl Rings {
@@ -40,6 +41,14 @@ impl Rings {
                         constants.sheet[plate] * self.shape[plate][ring],
                     );
                 }
+                let rim = constants.sheet[plate] * self.rim_shape[plate][ring];
+                if plate == 0 && plates.inlet == Inlet::Rim {
+                    ladder.rungs[ring][0] += rim;
+                    load[ring][0] += rim;
+                }
+                if plate == 1 && plates.outlet == Outlet::Rim {
+                    ladder.rungs[ring][2] += rim;
+                }
                 // A plate without area here keeps a node of its own at the coolant's temperature.
                 if self.columns.plate_area[plate][ring] <= 0.0 {
                     ladder.rungs[ring][2 * plate] += 1.0;
@@ -52,22 +61,10 @@ impl Rings {
                 (&mut ladder.rungs[ring], &mut load[ring]),
             );
         }
-        let [first, second] = [0, 1].map(|plate| {
-            (
-                self.last(plate),
-                constants.sheet[plate] * self.rim_shape[plate],
-            )
-        });
-        if plates.inlet == Inlet::Rim {
-            ladder.rungs[first.0][0] += first.1;
-            load[first.0][0] += first.1;
-        }
-        match plates.outlet {
-            Outlet::Rim => ladder.rungs[second.0][2] += second.1,
-            // Given fluxes leave the level open: the last ring is tied to it, and as what enters
-            // also leaves, the tie carries nothing.
-            Outlet::Flux(_) => ladder.rungs[second.0][2] += constants.sheet[1],
-            Outlet::Film(_) => {}
+        // Given fluxes leave the level open: one ring is tied to it, and as what enters also
+        // leaves, the tie carries nothing.
+        if matches!(plates.outlet, Outlet::Flux(_)) {
+            ladder.rungs[self.last(1)][2] += constants.sheet[1];
         }
         let temperatures = ladder.solution(load)?;
         let mut flow = Flow {
@@ -90,33 +87,56 @@ impl Rings {
     }
 }
 
-/// Radial shape factors between ring centres, and from the last centre to the rim.
+/// Radial shape factors between ring centres, and from each ring centre to the rim.
 ///
 /// ```text
 /// 1/S_j = ln(e/r_j)/Θ_j + ln(r_{j+1}/e)/Θ_{j+1},   Θ = 2A/(e_out² − e_in²)
+/// rim:  (Θ_j − Θ_{j+1})/ln(e/r_j)
 /// ```
 ///
 /// e is the radius between the rings and Θ the angle over which the plate is there: 2π for a
 /// whole ring, less where an edge or a neighbour's cell cuts it.
-pub fn shapes(hole_radius: f64, edges: &[f64], areas: &[f64]) -> (Vec<f64>, f64) {
-    let mut shape = vec![0.0; areas.len().saturating_sub(1)];
-    let mut rim = 0.0;
-    let mut behind: Option<f64> = None;
-    for (ring, area) in areas.iter().enumerate() {
-        let (inner, outer) = (edges[ring].max(hole_radius), edges[ring + 1]);
-        if *area <= 0.0 {
-            behind = None;
-            continue;
-        }
-        let centre = 0.5 * (inner + outer);
-        let angle = 2.0 * area / ((outer - inner) * (outer + inner));
-        if let Some(before) = behind {
-            shape[ring - 1] = (before + (centre / inner).ln() / angle).recip();
-        }
-        let ahead = (outer / centre).ln() / angle;
-        rim = ahead.recip();
-        behind = Some(ahead);
-    }
+pub fn shapes(hole_radius: f64, edges: &[f64], areas: &[f64]) -> (Vec<f64>, Vec<f64>) {
+    let bounds = |ring: usize| (edges[ring].max(hole_radius), edges[ring + 1]);
+    let angles: Vec<f64> = areas
+        .iter()
+        .enumerate()
+        .map(|(ring, area)| {
+            let (inner, outer) = bounds(ring);
+            if *area > 0.0 {
+                2.0 * area / ((outer - inner) * (outer + inner))
+            } else {
+                0.0
+            }
+        })
+        .collect();
+    let to_outer = |ring: usize| {
+        let (inner, outer) = bounds(ring);
+        (outer / (0.5 * (inner + outer))).ln()
+    };
+    let shape = (0..areas.len().saturating_sub(1))
+        .map(|ring| {
+            let (inner, outer) = bounds(ring + 1);
+            let from_inner = (0.5 * (inner + outer) / inner).ln();
+            let [here, next] = [angles[ring], angles[ring + 1]];
+            if here > 0.0 && next > 0.0 {
+                (to_outer(ring) / here + from_inner / next).recip()
+            } else {
+                0.0
+            }
+        })
+        .collect();
+    let rim = (0..areas.len())
+        .map(|ring| {
+            let next = angles.get(ring + 1).copied().unwrap_or(0.0);
+            let lost = angles[ring] - next;
+            if lost > 0.0 {
+                lost / to_outer(ring)
+            } else {
+                0.0
+            }
+        })
+        .collect();
     (shape, rim)
 }
 
@@ -126,7 +146,7 @@ pub fn shapes(hole_radius: f64, edges: &[f64], areas: &[f64]) -> (Vec<f64>, f64)
 /// grow geometrically. Where contact reaches the rim all are equally wide.
 pub fn edges(hole_radius: f64, contact_radius: f64, rim_radius: f64, rings: usize) -> Vec<f64> {
     let (a, c) = (hole_radius, contact_radius);
-    if !(c < rim_radius * (1.0 - 1e-9)) {
+    if c >= rim_radius * (1.0 - 1e-9) {
         return (0..=rings)
             .map(|ring| a + (rim_radius - a) * ring as f64 / rings as f64)
             .collect();

@@ -32,7 +32,7 @@ pub struct Path {
     pub contact_per_bolt: Vec<f64>,
     /// Mean of the heated zone to mean of the sink surface.
     pub source_to_sink: f64,
-    /// From the mean sink surface to the coolant: 1/(h_s A); none without a film.
+    /// From the mean sink surface to the coolant: `1/(h_s A)`; none without a film.
     pub coolant_drop: Option<f64>,
     /// Source to sink when the faces meet perfectly wherever both plates are.
     pub perfect_contact: f64,
@@ -88,7 +88,7 @@ impl Cells {
     /// The borders of cells carry no heat, so several bolts are never too good for the field used
     /// but for the mapping of each cell to circles.
     pub fn solve<H: Fn(f64) -> f64>(&self, load: &Load<H>) -> Path {
-        let cells = &self.cells;
+        let cells = &self.fine;
         let mut faces: Vec<Option<Faces>> = Vec::with_capacity(cells.len());
         let twins: Vec<usize> = (0..cells.len())
             .map(|index| self.twin(cells, index, load))
@@ -121,7 +121,7 @@ impl Cells {
         perfect: &Whole,
     ) -> Path {
         let contact: Vec<f64> = self
-            .cells
+            .fine
             .iter()
             .enumerate()
             .map(|(index, cell)| cell.faces(index, load, Shanks::None).contact)
@@ -158,7 +158,7 @@ impl Cells {
     ///
     /// The method is of second order in the ring width, so the error left is about a third of it.
     pub fn ring_error<H: Fn(f64) -> f64>(&self, load: &Load<H>) -> f64 {
-        let [fine, coarse] = [&self.cells, &self.coarse].map(|cells| {
+        let [fine, coarse] = [&self.fine, &self.coarse].map(|cells| {
             let twins: Vec<usize> = (0..cells.len())
                 .map(|index| self.twin(cells, index, load))
                 .collect();
@@ -304,8 +304,8 @@ impl Cells {
     /// The network without shank where it is an admissible field: a path beside it only helps.
     fn upper<H: Fn(f64) -> f64>(&self, load: &Load<H>) -> Option<f64> {
         self.is_round().then(|| {
-            let bare = self.whole(&self.cells, &[0], load, |index| {
-                let faces = self.cells[index].faces(index, load, Shanks::None);
+            let bare = self.whole(&self.fine, &[0], load, |index| {
+                let faces = self.fine[index].faces(index, load, Shanks::None);
                 Some(faces.conductance)
             });
             bare.source - self.film_drop()

@@ -141,11 +141,26 @@ impl Plan {
         inside(outline, *origin, point)
     }
 
-    fn on_plate(&self, plate: usize, point: [f64; 2]) -> bool {
+    fn on_plate(&self, plate: usize, (point, near): ([f64; 2], &[usize])) -> bool {
         self.on_outline(plate, point)
-            && self.sites.iter().all(|site| {
+            && near.iter().all(|bolt| {
+                let site = &self.sites[*bolt];
                 (point[0] - site.at[0]).hypot(point[1] - site.at[1]) >= site.hole_radius[plate]
             })
+    }
+
+    /// Bolts whose hole, head or contact can reach into a rectangle.
+    fn near(&self, low: [f64; 2], high: [f64; 2]) -> Vec<usize> {
+        let reaches = |bolt: &usize| {
+            let site = &self.sites[*bolt];
+            let reach = site
+                .cone
+                .contact_radius
+                .max(site.cone.bearing_radius)
+                .max(self.hole_radius(*bolt));
+            (0..2).all(|k| site.at[k] + reach >= low[k] && site.at[k] - reach <= high[k])
+        };
+        (0..self.sites.len()).filter(reaches).collect()
     }
 
     fn heated(&self, point: [f64; 2]) -> bool {
@@ -170,6 +185,7 @@ impl PlanGrid {
     /// Samples one grid cell: areas, patches of pressure, patches under heads.
     fn sample(&mut self, low: [f64; 2], high: [f64; 2]) {
         let plan = &self.cells.plan;
+        let near = plan.near(low, high);
         let point_area = (high[0] - low[0]) * (high[1] - low[1]) / f64::from(SAMPLES * SAMPLES);
         let (mut areas, mut source, mut open) = ([0.0; 2], 0.0, 0.0);
         for index in 0..SAMPLES * SAMPLES {
@@ -177,7 +193,7 @@ impl PlanGrid {
                 sample(low[0], high[0], index % SAMPLES),
                 sample(low[1], high[1], index / SAMPLES),
             ];
-            let on = [0, 1].map(|plate| plan.on_plate(plate, point));
+            let on = [0, 1].map(|plate| plan.on_plate(plate, (point, &near)));
             for plate in 0..2 {
                 areas[plate] += if on[plate] { point_area } else { 0.0 };
             }
@@ -187,18 +203,17 @@ impl PlanGrid {
             if !(on[0] && on[1]) {
                 continue;
             }
-            let distances = plan
-                .sites
-                .iter()
-                .map(|site| (point[0] - site.at[0]).hypot(point[1] - site.at[1]));
+            let distances = near.iter().map(|bolt| {
+                let at = plan.sites[*bolt].at;
+                (*bolt, (point[0] - at[0]).hypot(point[1] - at[1]))
+            });
             let weights: Vec<(usize, f64)> = distances
                 .clone()
-                .enumerate()
                 .map(|(bolt, distance)| (bolt, plan.sites[bolt].cone.pressure(distance, 1.0)))
                 .filter(|(_, weight)| *weight > 0.0)
                 .collect();
             let head = distances
-                .enumerate()
+                .clone()
                 .find(|(bolt, distance)| *distance < plan.sites[*bolt].cone.bearing_radius);
             if weights.is_empty() && head.is_none() {
                 open += point_area;
@@ -217,8 +232,8 @@ impl PlanGrid {
         }
         self.columns.first_patch.push(self.columns.patch_area.len());
         self.columns.source_area.push(source);
-        for plate in 0..2 {
-            self.columns.plate_area[plate].push(areas[plate]);
+        for (plate, area) in areas.into_iter().enumerate() {
+            self.columns.plate_area[plate].push(area);
         }
     }
 
@@ -228,6 +243,7 @@ impl PlanGrid {
         let node = at[1] * self.size[0] + at[0];
         let low = [0, 1].map(|k| lines[k][at[k]]);
         let high = [0, 1].map(|k| lines[k][at[k] + 1]);
+        let near = plan.near(low, high);
         for axis in 0..2 {
             let across = 1 - axis;
             let face = |place: f64, on: &dyn Fn([f64; 2]) -> bool| {
@@ -243,7 +259,7 @@ impl PlanGrid {
             if at[axis] + 1 < self.size[axis] {
                 let distance = 0.5 * (lines[axis][at[axis] + 2] - low[axis]);
                 for plate in 0..2 {
-                    let width = face(high[axis], &|point| plan.on_plate(plate, point));
+                    let width = face(high[axis], &|point| plan.on_plate(plate, (point, &near)));
                     self.shape[node][axis][plate] = width / distance;
                 }
             }
@@ -262,7 +278,9 @@ impl PlanGrid {
     fn settle(&mut self) {
         let scaled = |areas: &mut Vec<f64>, exact: f64| {
             let factor = exact / areas.iter().sum::<f64>();
-            areas.iter_mut().for_each(|area| *area *= factor);
+            for area in areas {
+                *area *= factor;
+            }
         };
         for plate in 0..2 {
             scaled(

@@ -72,7 +72,7 @@ fn cells_cover_the_plates() {
     assert!((cells.interface_area / small - 1.0).abs() < 1e-12);
     for plate in 0..2 {
         let rings: f64 = cells
-            .cells
+            .fine
             .iter()
             .flat_map(|cell| &cell.rings.columns.plate_area[plate])
             .sum();
@@ -93,7 +93,7 @@ fn a_neighbours_large_hole_is_cut_out_of_the_cell_it_reaches_into() {
 #[test]
 fn equal_cells_are_told_once_and_share_the_heat() {
     let cells = cells(&case_i());
-    assert!(cells.cells.iter().all(|cell| cell.like == 0));
+    assert!(cells.fine.iter().all(|cell| cell.like == 0));
     let together = cells.solve(&load(power_law, &[5000.0; 4], &[0.0; 4]));
     // A force that differs by 1e-9 makes every cell its own case.
     let forces = [5000.0, 5000.000005, 5000.00001, 5000.000015];
@@ -181,8 +181,8 @@ fn uniform_conductance_over_equal_plates_is_a_slab() {
 #[test]
 fn no_contact_and_no_gas_is_an_infinite_resistance() {
     let path = cells(&round(DEFAULT_RINGS)).solve(&load(power_law, &[0.0], &[0.0]));
-    assert_eq!(path.source_to_sink, f64::INFINITY);
-    assert_eq!(path.contact, 0.0);
+    assert!(path.source_to_sink.is_infinite());
+    assert!(path.contact.abs() < f64::MIN_POSITIVE);
 }
 
 #[test]
@@ -211,10 +211,12 @@ fn a_contact_over_the_edge_is_told_and_still_carries_its_force() {
     let near_the_edge = [[0.005, 0.02], [0.03, 0.02]];
     let cells = cells(&crowded(&near_the_edge));
     assert!(cells.cut_share[0] > 1e-4 && cells.cut_share[0] < 0.1);
-    assert_eq!(cells.cut_share[1], 0.0);
+    assert!(cells.cut_share[1].abs() < f64::MIN_POSITIVE);
     assert_eq!(cells.overlaps, [false, false]);
     assert!((cells.force_carried(&[3000.0, 1000.0]) / 4000.0 - 1.0).abs() < 1e-12);
 }
+
+const STEP: f64 = 0.1e-3;
 
 proptest! {
     #![proptest_config(ProptestConfig::with_cases(24))]
@@ -232,7 +234,6 @@ proptest! {
         let carried = cells.force_carried(&forces);
         prop_assert!((carried / (forces[0] + forces[1]) - 1.0).abs() < 1e-12);
         // Points on a fine grid know nothing of cells, rings and patches.
-        const STEP: f64 = 0.1e-3;
         let mut counted = 0.0;
         for row in 0..400 {
             for column in 0..500 {

@@ -98,14 +98,14 @@ fn order_of_the_bolts_changes_nothing() {
 fn no_contact_and_no_gas_is_an_infinite_resistance() {
     let grid = plan_grid(&cells(&case_i()), 1.0);
     let path = grid.solve(&load(power_law, &[0.0; 4], &[0.0; 4]));
-    assert_eq!(path.source_to_sink, f64::INFINITY);
+    assert!(path.source_to_sink.is_infinite());
 }
 
 #[test]
 fn calibrated_cells_follow_the_grid() {
     for (plan, nominal) in [(case_i(), 5000.0), (case_ii(), 3000.0)] {
         let cells = cells(&plan);
-        let grid = plan_grid(&cells, 1.0);
+        let grid = plan_grid(&cells, 0.5);
         let count = plan.sites.len();
         let shanks = vec![0.0; count];
         for gas in [0.0, 500.0, 5000.0] {
