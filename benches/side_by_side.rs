@@ -41,7 +41,7 @@ fn main() {
         .map(|index| 1000.0 + 5000.0 * index as f64 / EVALUATIONS as f64)
         .collect();
 
-    let sum = |force: f64| ring_sum(&rings, &cone, &state.faces.local, force);
+    let sum = |force: f64| ring_sum(&rings, &cone, &state.conditions.faces.local, force);
     let alone = timed(|| forces.iter().map(|force| sum(*force)).collect());
     let pair = rayon::ThreadPoolBuilder::new()
         .num_threads(2)
@@ -58,7 +58,7 @@ fn main() {
         println!("  NumPy: run benches/peer/run to time the peer in the same run");
         return;
     };
-    let law = law(&joint, &state.faces.local);
+    let law = law(&joint, &state.conditions.faces.local);
     let peer = peer(
         &python,
         &json!({
@@ -94,13 +94,7 @@ fn ring_sum(rings: &Rings, cone: &Cone, local: &Local, force: f64) -> f64 {
 
 /// The rings in contact of the first bolt, by their middle radius.
 fn rings(chain: &Chain, state: &ringsum::estimate::State, cone: &Cone) -> Rings {
-    let load = ringsum::resistance::Load {
-        conductance: |pressure: f64| state.faces.conductance(pressure),
-        conductivity: state.conductivity,
-        forces: &state.forces,
-        shanks: &state.shanks,
-    };
-    let rows = chain.cells().rings(&load, 0);
+    let rows = chain.cells().rings(&state.conditions.load(), 0);
     let inside = rows
         .iter()
         .filter(|row| row.radius[1] <= cone.contact_radius * (1.0 + 1e-12));

@@ -149,11 +149,11 @@ fn case_result(chain: &Chain, case: usize) -> Result<CaseResult, Failure> {
     let joint = chain.joint();
     let named = &joint.service.cases[case];
     let state = chain.state(case, &Realisation::default())?;
-    let open = state.forces.iter().filter(|force| **force <= 0.0).count();
+    let open = state.conditions.forces.iter().filter(|force| **force <= 0.0).count();
     if open > 0 {
         return Err(Failure::Open {
             bolts: open,
-            of: state.forces.len(),
+            of: state.conditions.forces.len(),
             case: named.name,
         });
     }
@@ -168,7 +168,7 @@ fn case_result(chain: &Chain, case: usize) -> Result<CaseResult, Failure> {
         results: results(path),
         resistance_lower: Some(path.resistance_lower),
         resistance_upper: path.resistance_upper,
-        numerical_error: chain.ring_error(&state),
+        numerical_error: chain.discretisation_error(&state),
         footprint: chain.footprint(),
         rise: joint.service.heat.map(|heat| Rise {
             source: Band::nominal(heat * path.source_to_sink),

@@ -55,7 +55,7 @@ proptest! {
         let chain = Chain::new(&joint).expect("a chain");
         let state = chain.state(0, &Realisation::default()).expect("a state");
         let carried = chain.pressure(&state).force;
-        let clamped: f64 = state.forces.iter().sum();
+        let clamped: f64 = state.conditions.forces.iter().sum();
         // The field is normalised by the quadrature that also reads it.
         prop_assert!((carried / clamped - 1.0).abs() < 1e-6, "{carried} N of {clamped} N");
     }
@@ -108,7 +108,7 @@ fn physics_does_not_know_which_units_it_is_in() {
     let [metre, millimetre] = [state(&metre), state(&millimetre)];
     let ratio = |one: f64, other: f64| (one / other - 1.0).abs();
     // Powers of ten are not exact in binary: 1e-12 is a few roundings.
-    assert!(ratio(metre.forces[0], millimetre.forces[0]) < 1e-12);
+    assert!(ratio(metre.conditions.forces[0], millimetre.conditions.forces[0]) < 1e-12);
     assert!(ratio(metre.path.contact * MM, millimetre.path.contact) < 1e-9);
     assert!(
         ratio(

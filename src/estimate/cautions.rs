@@ -132,7 +132,7 @@ fn resistance_cautions(chain: &Chain, cases: &[CaseResult]) -> Vec<Caution> {
         }
         let shank: f64 = chain
             .state(0, &Realisation::default())
-            .map_or(0.0, |state| state.shanks.iter().sum());
+            .map_or(0.0, |state| state.conditions.shanks.iter().sum());
         if shank * contact > BYPASS {
             found.push(caution(
                 "resistance/bypass",

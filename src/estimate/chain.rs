@@ -10,7 +10,10 @@ use crate::{
     },
     joint::{Engagement, Fastener, Joint, MeasuredKind, Outline, Plate},
     pressure::{self, Cone, Pair},
-    resistance::{Cells, Load, Path, Plan, Site, cells, cells::DEFAULT_RINGS},
+    resistance::{
+        Calibration, Cells, Load, Path, Plan, PlanGrid, Site, cells, cells::DEFAULT_RINGS,
+        plan_grid,
+    },
 };
 
 /// What the joint may cost beyond or below the closed-form field and the cell model, as factors on
@@ -39,11 +42,24 @@ pub struct Chain<'a> {
     pairs: Vec<Pair>,
     cones: Vec<Cone>,
     cells: Cells,
+    /// The plates whole, where bolts share them; none for one bolt in the middle of two discs.
+    grid: Option<PlanGrid>,
+    /// What the plan grid makes of the cells' answer, for each case.
+    calibrations: Vec<Option<Calibration>>,
 }
 
 /// One run through the chain.
 #[derive(Clone, Debug)]
 pub struct State {
+    /// What heat met.
+    pub conditions: Conditions,
+    /// Resistances, model form applied.
+    pub path: Path,
+}
+
+/// What heat meets in a joint: forces, faces, conductivities.
+#[derive(Clone, Debug)]
+pub struct Conditions {
     /// Clamp force of each bolt in service, N.
     pub forces: Vec<f64>,
     /// The faces: local conductance against pressure.
@@ -52,8 +68,18 @@ pub struct State {
     pub conductivity: [f64; 2],
     /// Conductance of each shank, W/K.
     pub shanks: Vec<f64>,
-    /// Resistances, model form applied.
-    pub path: Path,
+}
+
+impl Conditions {
+    /// The same as the networks take it.
+    pub fn load(&self) -> Load<'_, impl Fn(f64) -> f64> {
+        Load {
+            conductance: |pressure: f64| self.faces.conductance(pressure),
+            conductivity: self.conductivity,
+            forces: &self.forces,
+            shanks: &self.shanks,
+        }
+    }
 }
 
 /// The faces of a joint at one realisation.
@@ -115,14 +141,34 @@ impl<'a> Chain<'a> {
             sink: joint.sink,
             rings: DEFAULT_RINGS,
         });
-        Ok(Self {
+        let round = cones.len() == 1 && pairs[0].rim_radius.is_finite();
+        let mut chain = Self {
             joint,
             groups,
             group_of,
             pairs,
             cones,
+            grid: (!round).then(|| plan_grid(&cells, 1.0)),
             cells,
-        })
+            calibrations: Vec::new(),
+        };
+        chain.calibrations = (0..joint.service.cases.len())
+            .map(|case| chain.calibration(case))
+            .collect::<Result<Vec<_>, Failure>>()?;
+        Ok(chain)
+    }
+
+    /// What the plan grid makes of the cells' answer at the nominal inputs of a case.
+    fn calibration(&self, case: usize) -> Result<Option<Calibration>, Failure> {
+        let Some(grid) = &self.grid else {
+            return Ok(None);
+        };
+        let nominal = self.conditions(case, &Realisation::default())?;
+        let load = nominal.load();
+        Ok(Some(Calibration::between(
+            &self.cells.solve(&load),
+            &grid.solve(&load),
+        )))
     }
 
     /// The joint.
@@ -137,6 +183,19 @@ impl<'a> Chain<'a> {
 
     /// Runs one case through the chain at one realisation.
     pub fn state(&self, case: usize, at: &Realisation) -> Result<State, Failure> {
+        let conditions = self.conditions(case, at)?;
+        let solved = self.cells.solve(&conditions.load());
+        let path = match self.calibrations.get(case) {
+            Some(Some(calibration)) => calibration.applied(solved),
+            _ => solved,
+        };
+        let path = with_form(path, self.form(at.field));
+        self.check(case, &path)?;
+        Ok(State { conditions, path })
+    }
+
+    /// Forces, faces and conductivities of one case at one realisation: all that heat meets.
+    fn conditions(&self, case: usize, at: &Realisation) -> Result<Conditions, Failure> {
         let joint = self.joint;
         let by_group: Vec<f64> = joint
             .fasteners
@@ -146,42 +205,35 @@ impl<'a> Chain<'a> {
             .collect();
         let forces: Vec<f64> = self.group_of.iter().map(|group| by_group[*group]).collect();
         let temperature = joint.service.cases[case].temperature;
-        let conductivity = [
-            surfaces::conductivity(joint.warm(), temperature, at.conductivity[0])?,
-            surfaces::conductivity(joint.cold(), temperature, at.conductivity[1])?,
-        ];
         let interface = surfaces::interface(joint, case, at)?;
         let per_pascal = self
             .force_law(&forces, temperature)
             .map(|law| law * interface.solid_factor);
-        let local = interface.prepare();
-        let shanks = self.shanks(temperature)?;
-        let faces = Faces { local, per_pascal };
-        let solved = self.cells.solve(&Load {
-            conductance: |pressure: f64| faces.conductance(pressure),
-            conductivity,
-            forces: &forces,
-            shanks: &shanks,
-        });
-        let path = with_form(solved, self.form(at.field));
-        self.check(case, &path)?;
-        Ok(State {
+        Ok(Conditions {
             forces,
-            faces,
-            conductivity,
-            shanks,
-            path,
+            faces: Faces {
+                local: interface.prepare(),
+                per_pascal,
+            },
+            conductivity: [
+                surfaces::conductivity(joint.warm(), temperature, at.conductivity[0])?,
+                surfaces::conductivity(joint.cold(), temperature, at.conductivity[1])?,
+            ],
+            shanks: self.shanks(temperature)?,
         })
     }
 
-    /// Difference between all and half of the rings at a state, relative to source to sink.
-    pub fn ring_error(&self, state: &State) -> f64 {
-        self.cells.ring_error(&Load {
-            conductance: |pressure: f64| state.faces.conductance(pressure),
-            conductivity: state.conductivity,
-            forces: &state.forces,
-            shanks: &state.shanks,
-        })
+    /// Error of the discretisation at the nominal state of a case, relative to source to sink:
+    /// all against half of the lines or rings.
+    pub fn discretisation_error(&self, state: &State) -> f64 {
+        let load = state.conditions.load();
+        match &self.grid {
+            None => self.cells.ring_error(&load),
+            Some(grid) => {
+                let coarse = plan_grid(&self.cells, 0.5).source_to_sink(&load);
+                (coarse / grid.source_to_sink(&load) - 1.0).abs()
+            }
+        }
     }
 
     /// Measured W/K per bolt as a local conductance over pressure, W/(m² K Pa).
@@ -292,10 +344,10 @@ impl<'a> Chain<'a> {
     /// The pressure field of a state.
     pub fn pressure(&self, state: &State) -> PressureResult {
         PressureResult {
-            peak: self.cells.peak_pressure(&state.forces),
+            peak: self.cells.peak_pressure(&state.conditions.forces),
             contact_area: self.cells.contact_area(),
-            radius_95: self.cells.radius_holding(0.95, &state.forces),
-            force: self.cells.force_carried(&state.forces),
+            radius_95: self.cells.radius_holding(0.95, &state.conditions.forces),
+            force: self.cells.force_carried(&state.conditions.forces),
             gap_max: None,
             gap_mean: None,
         }

@@ -3,7 +3,6 @@
 use crate::{
     estimate::{Chain, Failure, FieldMap, Realisation, RingRow},
     joint::{Joint, Outline, Plate},
-    resistance::Load,
 };
 
 /// Pressure and local conductance over the window of both plates, `columns` points wide.
@@ -24,10 +23,10 @@ pub fn field_map(joint: &Joint, columns: usize) -> Result<FieldMap, Failure> {
         let y = lower + (upper - lower) * (row as f64 + 0.5) / rows as f64;
         for column in 0..columns {
             let x = left + (column as f64 + 0.5) * step;
-            let pressure = chain.cells().pressure_at([x, y], &state.forces);
+            let pressure = chain.cells().pressure_at([x, y], &state.conditions.forces);
             map.pressure.push(pressure.unwrap_or(f64::NAN));
             map.conductance
-                .push(pressure.map_or(f64::NAN, |pressure| state.faces.conductance(pressure)));
+                .push(pressure.map_or(f64::NAN, |pressure| state.conditions.faces.conductance(pressure)));
         }
     }
     Ok(map)
@@ -37,13 +36,8 @@ pub fn field_map(joint: &Joint, columns: usize) -> Result<FieldMap, Failure> {
 pub fn ring_tables(joint: &Joint) -> Result<Vec<Vec<RingRow>>, Failure> {
     let chain = Chain::new(joint)?;
     let state = chain.state(0, &Realisation::default())?;
-    let load = Load {
-        conductance: |pressure: f64| state.faces.conductance(pressure),
-        conductivity: state.conductivity,
-        forces: &state.forces,
-        shanks: &state.shanks,
-    };
-    Ok((0..state.forces.len())
+    let load = state.conditions.load();
+    Ok((0..state.conditions.forces.len())
         .map(|bolt| chain.cells().rings(&load, bolt))
         .collect())
 }

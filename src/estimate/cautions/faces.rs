@@ -21,7 +21,7 @@ pub(super) fn conductance_cautions(chain: &Chain, cases: &[CaseResult]) -> Vec<C
     let mut found = Vec::new();
     if let Ok(state) = chain.state(0, &Realisation::default()) {
         let peak = cases.first().map_or(0.0, |case| case.pressure.peak);
-        found.extend(state.faces.local.cautions(peak));
+        found.extend(state.conditions.faces.local.cautions(peak));
     }
     if !surfaces::bridged(joint) {
         let by_rule: Vec<&Plate> = joint
