@@ -213,6 +213,7 @@ mod tests {
     fn reversed_interval_changes_the_sign() {
         let found = adaptive(|x| x, &[2.0, 0.0], 1e-12);
         assert!((found.value + 2.0).abs() < 1e-14);
+        assert!(found.error > 0.0);
     }
 
     #[test]

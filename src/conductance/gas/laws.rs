@@ -188,6 +188,27 @@ mod tests {
         assert!(separation_ratio(f64::NAN).is_nan());
     }
 
+    // By an independent program; 1e-9 is its printing.
+    #[test]
+    fn correction_matches_an_independent_program() {
+        for (load, jump, wanted) in [
+            (1e-3, 0.1, 9323.155524410586),
+            (1e-2, 0.02, 15678.366366642771),
+            (1e-4, 0.5, 6576.100676033456),
+            (1e-3, 2.0, 5283.842288358419),
+        ] {
+            let gas = GapGas {
+                conductivity: 0.026,
+                parameter: jump * 1e-6,
+            };
+            let gap = Gap {
+                separation: separation_ratio(load) * 1e-6,
+                roughness: 1e-6,
+            };
+            assert!((gap.corrected(&gas) / wanted - 1.0).abs() < 1e-9, "{load}");
+        }
+    }
+
     // 0.5 %: the two branches of the published correction meet with 1.063 against 1.060.
     #[test]
     fn correction_branches_meet() {
