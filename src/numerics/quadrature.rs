@@ -51,9 +51,8 @@ const PIECES: usize = 2000;
 ///
 /// Gauss–Kronrod with 7 and 15 points; the piece with the largest error is halved until the sum
 /// of errors is below `relative · |value|`, no piece can be halved, or 2000 pieces are reached:
-/// read `error`,
-/// which is infinite when the value is not finite. Put the kinks and singular ends of `f` among the breaks. The end points
-/// themselves are never evaluated.
+/// read `error`, which is infinite when the value is not finite. Put the kinks and singular ends
+/// of `f` among the breaks. The end points themselves are never evaluated.
 ///
 /// Source: Piessens et al. 1983, QUADPACK, nodes, weights and error rule from memory.
 /// Checked: `polynomial_of_degree_22_is_exact`, `error_bounds_the_truth`.
