@@ -15,7 +15,7 @@ const BOND_LINE: f64 = 1.31e-4;
 /// ```
 ///
 /// `stress_ratio` is τ/P, yield stress over pressure. Valid: 1e5 to 1e6 Pa; above, the largest filler
-/// particle stops it, and [`Filling`] does.
+/// particle stops it: the interface keeps the bond line between its bounds.
 /// Source: Prasher 2002, scaling constants from memory; that yield stress and conductivity are
 /// what is needed is seen.
 /// Checked: `paste_bond_lines` in `tests/validation_conductance.rs`.

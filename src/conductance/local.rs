@@ -139,8 +139,7 @@ impl Local {
 
     /// What crosses the interface, part by part.
     ///
-    /// A measured value stands as `solid`, and only what the measurement lacks below its first
-    /// point is split.
+    /// A measured value under load stands whole as `solid`; it holds the coatings too.
     pub fn at(&self, pressure: f64) -> Conductance {
         let mut parts = Conductance {
             solid: 0.0,

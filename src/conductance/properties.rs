@@ -209,6 +209,9 @@ proptest! {
     #[test]
     fn factors_act_on_their_own_part(interface in interface(), pressure in 1e4..1e7f64) {
         let mut plain = interface;
+        // Below the first measured point the value blends into what crosses without load.
+        let first = plain.measured.as_ref().map_or(0.0, |points| points[0].0);
+        let pressure = pressure.max(first);
         plain.solid_factor = 1.0;
         plain.filler_factor = 1.0;
         let mut scattered = plain.clone();
@@ -216,7 +219,7 @@ proptest! {
         scattered.filler_factor = 0.8;
         let (plain, scattered) = (plain.prepare().at(pressure), scattered.prepare().at(pressure));
         prop_assert!((scattered.filler * 0.8 - plain.filler).abs() <= 1e-12 * plain.filler);
-        prop_assert!(scattered.solid >= plain.solid);
+        prop_assert!((scattered.solid / 1.7 - plain.solid).abs() <= 1e-12 * plain.solid);
         prop_assert!((scattered.gas - plain.gas).abs() <= 1e-12 * plain.gas);
     }
 }

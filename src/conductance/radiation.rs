@@ -21,9 +21,6 @@ const STEFAN_BOLTZMANN: f64 = 5.670374419e-8;
 /// Checked: `radiation_between_black_faces`, and in `tests/validation_conductance.rs`.
 pub fn conductance(temperature: f64, emissivity: [f64; 2]) -> f64 {
     let [first, second] = emissivity;
-    if first <= 0.0 || second <= 0.0 {
-        return 0.0;
-    }
     4.0 * STEFAN_BOLTZMANN * temperature.powi(3) / (first.recip() + second.recip() - 1.0)
 }
 

@@ -51,9 +51,8 @@ const PIECES: usize = 2000;
 ///
 /// Gauss–Kronrod with 7 and 15 points; the piece with the largest error is halved until the sum
 /// of errors is below `relative · |value|`, no piece can be halved, or 2000 pieces are reached:
-/// read `error`,
-/// which is infinite when the value is not finite. Put the kinks and singular ends of `f` among the breaks. The end points
-/// themselves are never evaluated.
+/// read `error`, which is infinite when the value is not finite. Put the kinks and singular ends
+/// of `f` among the breaks. The end points themselves are never evaluated.
 ///
 /// Source: Piessens et al. 1983, QUADPACK, nodes, weights and error rule from memory.
 /// Checked: `polynomial_of_degree_22_is_exact`, `error_bounds_the_truth`.
@@ -213,6 +212,7 @@ mod tests {
     fn reversed_interval_changes_the_sign() {
         let found = adaptive(|x| x, &[2.0, 0.0], 1e-12);
         assert!((found.value + 2.0).abs() < 1e-14);
+        assert!(found.error > 0.0);
     }
 
     #[test]

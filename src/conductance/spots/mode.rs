@@ -199,6 +199,7 @@ mod tests {
             for factor in [1.0 + 1e-9, 2.0, 1e9] {
                 let held = mode.reduced_conductance(end * factor);
                 assert!((held / at_the_end - 1.0).abs() < 1e-14, "{law:?} {factor}");
+                assert!(mode.separation(end * factor).abs() < 1e-12);
             }
         }
         assert!(Mode::plastic(1e9).reduced_conductance(f64::NAN).is_nan());

@@ -196,3 +196,29 @@ fn coated(face: &Face, surfaces: &Surfaces) -> (f64, HardnessCurve) {
     });
     (film::conductivity(&coated), hardness)
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    // 1e-12: two powers of numbers near 10⁹.
+    #[test]
+    fn reference_hardness_belongs_to_the_reference_load() {
+        let surfaces = Surfaces {
+            conductivity: 16.0,
+            roughness: 1.1e-6,
+            slope: 0.17,
+            elastic_modulus: 1e11,
+        };
+        let micro = Hardness::Micro {
+            c1: 6.271e9,
+            c2: -0.229,
+        };
+        let curve = HardnessCurve::of(micro, &surfaces);
+        let hardness = curve.at_reference_load();
+        let at_that_pressure = curve.at(REFERENCE_LOAD * hardness);
+        assert!((at_that_pressure / hardness - 1.0).abs() < 1e-12);
+        let bulk = HardnessCurve::of(Hardness::Meyer(1e9), &surfaces);
+        assert!((bulk.at_reference_load() - 1e9).abs() < 1.0);
+    }
+}
