@@ -3,10 +3,13 @@
 use std::{collections::BTreeMap, f64::consts::PI};
 
 use ringsum::{
-    joint::{ConeRule, ConeShape},
+    joint::{ConeRule, ConeShape, Outline, Sink, Source, Zone},
     pressure::{Cone, Pair, cone},
     resistance::{
+        Load, Plan, Site,
         annulus::{Annulus, Ends},
+        cells,
+        cells::DEFAULT_RINGS,
         network::edges,
     },
 };
@@ -182,6 +185,42 @@ fn closed_form_stays_near_the_reference_solutions() {
         let sum = integral(&h, [cone.hole_radius, cone.contact_radius], 1e-9);
         let off = sum / case.Gsum95 - 1.0;
         assert!(off.abs() < 0.006, "{}: ring sum {off:+.5}", case.id);
+    }
+}
+
+#[test]
+fn ring_sum_agrees_with_adaptive_quadrature() {
+    for case in cases() {
+        let i = &case.inputs;
+        let cone = case.closed_form();
+        let disc = Outline::Disc { radius: i.Ro };
+        let plan = Plan {
+            outlines: [(disc, [0.0; 2]); 2],
+            thickness: [i.t1, i.t2],
+            sites: vec![Site {
+                at: [0.0; 2],
+                hole_radius: [i.a; 2],
+                cone,
+            }],
+            source: Source {
+                zone: Zone::Face,
+                isothermal: true,
+            },
+            sink: Sink::IsothermalBack,
+            rings: DEFAULT_RINGS,
+        };
+        let law = |pressure: f64| pressure.powf(0.95);
+        let load = Load {
+            conductance: law,
+            conductivity: [i.k1, i.k2],
+            forces: &[case.force()],
+            shanks: &[0.0],
+        };
+        let h = |r: f64| law(cone.pressure(r, case.force()));
+        let exact = integral(&h, [cone.hole_radius, cone.contact_radius], 1e-9);
+        let off = cells(&plan).solve(&load).contact / exact - 1.0;
+        // What the default rings promise.
+        assert!(off.abs() < 1e-4, "{}: {off:+.2e}", case.id);
     }
 }
 

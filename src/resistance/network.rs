@@ -160,3 +160,80 @@ pub fn edges(hole_radius: f64, contact_radius: f64, rim_radius: f64, rings: usiz
     let growing = (1..=outside).map(|ring| c * (rim_radius / c).powf(ring as f64 / outside as f64));
     clustered.chain(growing).collect()
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::resistance::annulus::Annulus;
+
+    /// Unlike plates, heated inside a radius of 3, with a gap beyond the contact.
+    fn heated_in_the_middle() -> (Rings, Vec<f64>) {
+        let edges = edges(1.0, 2.5, 8.0, 60);
+        let annulus = Annulus {
+            thickness: [0.4, 1.1],
+            conductivity: [2.0, 0.7],
+            edges: edges.clone(),
+        };
+        let mut rings = annulus.rings();
+        for (ring, area) in rings.columns.source_area.iter_mut().enumerate() {
+            if edges[ring + 1] > 3.0 {
+                *area = 0.0;
+            }
+        }
+        let conductance = edges[1..]
+            .iter()
+            .map(|outer| if *outer < 2.5 { 9.0 } else { 0.02 })
+            .collect();
+        (rings, conductance)
+    }
+
+    #[test]
+    fn heat_that_enters_leaves_through_the_film() {
+        let (rings, conductance) = heated_in_the_middle();
+        let film = 0.3;
+        for inlet in [Inlet::Flux(0.8), Inlet::Temperature] {
+            let plates = Plates {
+                thickness: [0.4, 1.1],
+                conductivity: [2.0, 0.7],
+                inlet,
+                outlet: Outlet::Film(film),
+            };
+            let flow = rings.flow(&plates, &conductance).unwrap();
+            // Rounding of sixty rings.
+            assert!(
+                (flow.back * film / flow.heat - 1.0).abs() < 1e-10,
+                "{flow:?}"
+            );
+        }
+    }
+
+    #[test]
+    fn one_temperature_over_the_source_resists_less_than_even_flux() {
+        let (rings, conductance) = heated_in_the_middle();
+        let heated: f64 = rings.columns.source_area.iter().sum();
+        let resistance = |inlet| {
+            let plates = Plates {
+                thickness: [0.4, 1.1],
+                conductivity: [2.0, 0.7],
+                inlet,
+                outlet: Outlet::Film(f64::INFINITY),
+            };
+            let flow = rings.flow(&plates, &conductance).unwrap();
+            flow.source / heated / flow.heat
+        };
+        let (even, held) = (resistance(Inlet::Flux(1.0)), resistance(Inlet::Temperature));
+        assert!(held < even && held > 0.5 * even, "{held} {even}");
+    }
+
+    #[test]
+    fn without_any_joint_no_heat_flows() {
+        let (rings, conductance) = heated_in_the_middle();
+        let plates = Plates {
+            thickness: [0.4, 1.1],
+            conductivity: [2.0, 0.7],
+            inlet: Inlet::Flux(1.0),
+            outlet: Outlet::Film(1.0),
+        };
+        assert_eq!(rings.flow(&plates, &vec![0.0; conductance.len()]), None);
+    }
+}
