@@ -96,3 +96,6 @@ fn drawable(value: f64, what: &'static str) -> Result<f64, FigureError> {
         Err(FigureError::NotFinite(what))
     }
 }
+
+#[cfg(test)]
+mod tests;

@@ -106,7 +106,7 @@ impl Axis {
 
     fn logarithmic_ticks(&self, most: usize, decades: f64) -> Vec<(f64, String)> {
         let most = most.max(2) as f64;
-        let steps: &[f64] = if 3.0 * decades <= most + 1.0 {
+        let steps: &[f64] = if 3.0 * decades <= 1.6 * most {
             &[1.0, 2.0, 5.0]
         } else {
             &[1.0]
@@ -235,6 +235,7 @@ fn vertical_title(sheet: &mut Sheet, x: f64, frame: Frame, title: &str) {
         turn: Turn::Up,
         ..Lettering::plain(LABEL, INK, Anchor::Middle)
     };
+    let title = lettering.shortened(title, frame.height().max(150.0));
     sheet.text(
         [x, f64::midpoint(frame.top, frame.bottom)],
         title,
@@ -244,7 +245,7 @@ fn vertical_title(sheet: &mut Sheet, x: f64, frame: Frame, title: &str) {
 
 /// A value on a tick, with the digits the step between ticks needs.
 fn label(value: f64, step: f64) -> String {
-    if value.abs() < 1e-9 * step {
+    if value.abs() <= 1e-9 * step {
         return "0".into();
     }
     let step_place = (step.log10() + 1e-9).floor() as i32;
@@ -263,11 +264,22 @@ fn label(value: f64, step: f64) -> String {
 
 /// A number to so many significant digits, as people write it.
 pub(super) fn significant(value: f64, digits: i32) -> String {
-    if value == 0.0 || !value.is_finite() {
+    if !value.is_finite() || value.abs() < 1e-60 {
         return "0".into();
     }
     let place = value.abs().log10().floor() as i32;
-    label(value, 10_f64.powi(place - digits + 1))
+    let step = 10_f64.powi(place - digits + 1);
+    label((value / step).round() * step, step)
+}
+
+/// A given number: three significant digits without zeros that say nothing.
+pub(super) fn plain(value: f64) -> String {
+    let shown = significant(value, 3);
+    if shown.contains('.') && !shown.contains('·') {
+        shown.trim_end_matches('0').trim_end_matches('.').to_owned()
+    } else {
+        shown
+    }
 }
 
 /// Thousands apart by a thin blank from five digits on, and a true minus.
@@ -346,7 +358,9 @@ mod tests {
     #[test]
     fn numbers_keep_their_digits() {
         assert_eq!(significant(2.2, 3), "2.20");
-        assert_eq!(significant(12345.0, 3), "12\u{2009}345");
+        assert_eq!(significant(12345.0, 3), "12\u{2009}300");
+        assert_eq!(plain(2.2), "2.2");
+        assert_eq!(plain(60.0), "60");
         assert_eq!(significant(0.001234, 2), "0.0012");
     }
 }

@@ -97,7 +97,7 @@ pub(super) fn draw(plot: &CumulativePlot) -> Result<Sheet, FigureError> {
         if (0.0..=x_axis.high).contains(&radius) {
             marks.push(Flag {
                 x: across(radius),
-                text: format!("{} {} mm", mark.name, axis::significant(radius, 3)),
+                text: format!("{} {} mm", mark.name, axis::plain(radius)),
                 stroke: Stroke::dashed(NARROW, GREY, &[4.0, 2.5]),
             });
         }
@@ -222,7 +222,7 @@ fn crossing(curve: &[[f64; 2]], share: f64) -> Option<f64> {
 /// Names at the ends of the curves; curves that end within half a percent share a line.
 fn end_labels(plot: &CumulativePlot, curves: &[Vec<[f64; 2]>]) -> Vec<EndLabel> {
     const ROOM: f64 = 150.0;
-    let mut ends: Vec<(f64, &str, Colour)> = curves
+    let mut ends: Vec<(f64, (usize, &str), Colour)> = curves
         .iter()
         .zip(&plot.curves)
         .enumerate()
@@ -230,14 +230,14 @@ fn end_labels(plot: &CumulativePlot, curves: &[Vec<[f64; 2]>]) -> Vec<EndLabel> 
             let last = points[points.len() - 1][1];
             (
                 last,
-                curve.label.as_str(),
+                (index, curve.label.as_str()),
                 stroke(index, curves.len()).colour,
             )
         })
         .collect();
     ends.sort_by(|a, b| b.0.total_cmp(&a.0));
     let close = 0.005 * ends.iter().map(|e| e.0.abs()).fold(0.0, f64::max);
-    let mut groups: Vec<(f64, Vec<&str>, Colour)> = Vec::new();
+    let mut groups: Vec<(f64, Vec<(usize, &str)>, Colour)> = Vec::new();
     for (value, name, colour) in ends {
         match groups.last_mut() {
             Some(group) if group.0 - value <= close => group.1.push(name),
@@ -246,8 +246,10 @@ fn end_labels(plot: &CumulativePlot, curves: &[Vec<[f64; 2]>]) -> Vec<EndLabel> 
     }
     groups
         .into_iter()
-        .map(|(value, names, colour)| {
-            let total = format!(" {} W/K", axis::significant(value, 3));
+        .map(|(value, mut names, colour)| {
+            let total = format!(": {} W/K", axis::significant(value, 3));
+            names.sort_unstable_by_key(|(index, _)| *index);
+            let names: Vec<&str> = names.into_iter().map(|(_, name)| name).collect();
             let names = END.shortened(&names.join(", "), ROOM - END.width(&total));
             EndLabel {
                 value,

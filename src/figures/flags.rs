@@ -47,7 +47,12 @@ impl Flags {
         }
         let stands = (0..1_usize << flags.len())
             .filter_map(|sides| rows(&flags, sides, [left, right]))
-            .min_by_key(|stands| stands.iter().map(|stand| stand.row).max())
+            .min_by_key(|stands| {
+                stands
+                    .iter()
+                    .map(|stand| stand.row * stand.row)
+                    .sum::<usize>()
+            })
             .unwrap_or_else(|| stacked(&flags, right));
         Self { flags, stands }
     }
@@ -109,12 +114,15 @@ fn rows(flags: &[Flag], sides: usize, [left, right]: [f64; 2]) -> Option<Vec<Sta
         let mut settled = true;
         for i in 0..flags.len() {
             for j in 0..flags.len() {
-                let crossed = flags[j].x > stands[i].start - APART / 2.0
-                    && flags[j].x < stands[i].end + APART / 2.0;
+                let crosses = |line: usize, label: usize| {
+                    flags[line].x > stands[label].start - APART / 2.0
+                        && flags[line].x < stands[label].end + APART / 2.0
+                };
+                let crossed = crosses(j, i);
                 let touching =
                     stands[i].start < stands[j].end + 6.0 && stands[j].start < stands[i].end + 6.0;
                 let lift = (crossed && stands[i].row <= stands[j].row)
-                    || (touching && i < j && stands[i].row == stands[j].row);
+                    || (touching && i < j && !crosses(i, j) && stands[i].row == stands[j].row);
                 if i != j && lift {
                     stands[i].row = stands[j].row + 1;
                     settled = false;

@@ -159,7 +159,7 @@ mod tests {
 
     #[test]
     fn widths_are_those_of_the_font() {
-        // DejaVu Sans 2.37: 0 is 1303, M is 1767 and j 569 units of 2048, j starts at -113.
+        // DejaVu Sans 2.37: 0 is 1303, M is 1767 and j 569 units of 2048, j starts at -37.
         assert!((width("0M", Weight::Regular, 2048.0) - (1303.0 + 1767.0)).abs() < 1e-9);
         let (advance, bearing) = metrics('j', Weight::Regular);
         assert!((advance * 2048.0 - 569.0).abs() < 1e-9);

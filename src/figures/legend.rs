@@ -3,7 +3,7 @@
 use crate::figures::{
     clip::Frame,
     lettering::{Anchor, Lettering},
-    sheet::{Colour, GREY, INK, LABEL, NARROW, Sheet, Stroke, circle},
+    sheet::{Colour, GREY, INK, LABEL, NARROW, PAPER, Sheet, Stroke},
 };
 
 /// What a name stands beside.
@@ -19,6 +19,8 @@ pub(super) enum Sample {
     Ring(Stroke),
     /// A dot.
     Dot(Colour),
+    /// A hollow dot.
+    HollowDot(Colour),
     /// A square with a colour of the field.
     Patch(Colour),
 }
@@ -71,15 +73,15 @@ fn draw(sheet: &mut Sheet, place: Frame, sample: Sample) {
             sheet.closed_within(place, &corners(place), Stroke::solid(NARROW, GREY));
         }
         Sample::Ring(stroke) => {
-            let ring = circle(centre, 5.5);
             let around = Frame {
                 top: place.top - 2.0,
                 bottom: place.bottom + 2.0,
                 ..place
             };
-            sheet.closed_within(around, &ring, stroke);
+            sheet.circle_within(around, (centre, 5.5), stroke);
         }
         Sample::Dot(colour) => sheet.disc(centre, 3.0, colour),
+        Sample::HollowDot(colour) => hollow_dot(sheet, centre, colour),
         Sample::Patch(colour) => {
             let square = Frame {
                 left: centre[0] - 6.0,
@@ -90,6 +92,12 @@ fn draw(sheet: &mut Sheet, place: Frame, sample: Sample) {
             sheet.closed_within(square, &corners(square), Stroke::solid(NARROW, GREY));
         }
     }
+}
+
+/// A dot with a white middle, for one point among the points of a curve.
+pub(super) fn hollow_dot(sheet: &mut Sheet, centre: [f64; 2], colour: Colour) {
+    sheet.disc(centre, 4.5, colour);
+    sheet.disc(centre, 2.5, PAPER);
 }
 
 /// The corners of a frame in turn.

@@ -111,7 +111,12 @@ pub(super) fn cleaned(text: &str) -> String {
             c => c,
         })
         .collect();
-    shown.split_whitespace().collect::<Vec<_>>().join(" ")
+    shown
+        // Blanks that bind a number to its unit stay.
+        .split(|c: char| c.is_whitespace() && c != '\u{a0}' && c != '\u{2009}')
+        .filter(|word| !word.is_empty())
+        .collect::<Vec<_>>()
+        .join(" ")
 }
 
 #[cfg(test)]

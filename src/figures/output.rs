@@ -136,6 +136,14 @@ fn replay<B: DrawingBackend>(
                 .draw_circle(grid(*centre), radius, &style, true)
                 .map_err(failed)
         }
+        Mark::Ring(centre, radius, width, colour) => {
+            let radius = (radius * FINE as f64).round().clamp(1.0, 2e4) as u32;
+            let stroke = (width * FINE as f64).round().max(1.0) as u32;
+            let style = ShapeStyle::from(paint(*colour)).stroke_width(stroke);
+            backend
+                .draw_circle(grid(*centre), radius, &style, false)
+                .map_err(failed)
+        }
         Mark::Text(at, content, lettering) => text(backend, *at, content, *lettering),
     }
 }
@@ -161,7 +169,7 @@ fn vector_text<B: DrawingBackend>(
         Turn::None => FontTransform::None,
         Turn::Up => FontTransform::Rotate270,
     };
-    let font = font(lettering.size * VECTOR_SIZE, lettering.weight).transform(turn);
+    let font = font(lettering.size * FINE as f64 * VECTOR_SIZE, lettering.weight).transform(turn);
     let colour = paint(lettering.colour);
     let style = TextStyle::from(font)
         .color(&colour)

@@ -4,7 +4,7 @@ use crate::{
     estimate::FieldMap,
     figures::{
         FigureError,
-        axis::{self, Axis, BELOW, Grid},
+        axis::{self, Axis, BELOW, Grid, Spread},
         clip::Frame,
         drawable,
         legend::{Sample, corners, legend},
@@ -22,7 +22,7 @@ mod raster;
 pub enum Scale {
     /// Evenly from zero (or from the lowest value, where that is negative).
     Linear,
-    /// By their logarithm, over at most five decades below the highest.
+    /// By their logarithm, over at most three decades below the highest.
     Logarithmic,
 }
 
@@ -187,11 +187,15 @@ impl View {
 const LARGEST: f64 = 400.0;
 const MARGIN: f64 = 20.0;
 
-const HIDDEN: Stroke = Stroke::dashed(0.9, INK, &[5.0, 2.5]);
+const HIDDEN: Stroke = Stroke::dashed(1.0, INK, &[5.0, 2.5]);
 const HEAD: Stroke = Stroke::solid(NARROW, INK);
 const HOLE: Stroke = Stroke::solid(WIDE, INK);
-const CONTACT: Stroke = Stroke::dashed(0.8, INK, &[3.0, 2.2]);
-const CENTRE: Stroke = Stroke::dashed(0.5, INK, &[9.0, 2.0, 2.0, 2.0]);
+const CONTACT: Stroke = Stroke::dashed(NARROW, INK, &[3.0, 2.2]);
+const CENTRE: Stroke = Stroke::solid(NARROW, INK);
+/// Laid under ink where the field may be as dark as the ink.
+const HALO: Stroke = Stroke::solid(1.75, PAPER);
+/// Radius of a head, points, below which fine work would clot.
+const SMALL: f64 = 10.0;
 const HEATED: Stroke = Stroke::dashed(WIDE, ACCENT, &[10.0, 2.5, 2.0, 2.5, 2.0, 2.5]);
 
 /// Draws the map.
@@ -217,7 +221,7 @@ pub(super) fn draw(map: &PlanMap) -> Result<Sheet, FigureError> {
     let bar_left = left + width.max(30.0) + 26.0;
     let bar_width = 14.0;
     let right = bar_left + bar_width + axis::side_room(&colours, area) + MARGIN;
-    let mut sheet = Sheet::new(right.max(440.0));
+    let mut sheet = Sheet::new(right.max(360.0));
     let top = sheet.header(&map.title, &subtitle(map)) + 8.0;
     let frame = Frame {
         left,
@@ -259,7 +263,7 @@ pub(super) fn draw(map: &PlanMap) -> Result<Sheet, FigureError> {
         right: sheet.size[0] - MARGIN,
         bottom: f64::INFINITY,
     };
-    sheet.size[1] = legend(&mut sheet, room, &key(map)) + 12.0;
+    sheet.size[1] = legend(&mut sheet, room, &key(map, &colours)) + 12.0;
     Ok(sheet)
 }
 
@@ -295,19 +299,28 @@ fn colour_axis(map: &PlanMap) -> Result<Axis, FigureError> {
         return Err(FigureError::Empty("the field"));
     }
     Ok(match map.scale {
-        Scale::Logarithmic if high > 0.0 => Axis::logarithmic(least.max(high * 1e-5), high),
+        Scale::Logarithmic if high > 0.0 => Axis::logarithmic(least.max(high * 1e-3), high),
         _ => Axis::over(low.min(0.0), high.max(low.min(0.0))),
     })
 }
 
 fn draw_plates(sheet: &mut Sheet, view: &View, map: &PlanMap) {
     for (index, outline) in map.outlines.iter().enumerate().rev() {
-        let edge = outline.shape.edge(view);
-        // Edges on the rim of the window are drawn whole, so the frame gives half a line.
-        sheet.closed_within(grown(view.frame, 1.0), &edge, plate_stroke(index));
+        draw_shape(sheet, view, &outline.shape, plate_stroke(index));
     }
     if let Some(zone) = &map.heated {
-        sheet.closed_within(grown(view.frame, 1.0), &zone.edge(view), HEATED);
+        draw_shape(sheet, view, zone, HEATED);
+    }
+}
+
+fn draw_shape(sheet: &mut Sheet, view: &View, shape: &PlanShape, stroke: Stroke) {
+    // Edges on the rim of the window are drawn whole, so the frame gives half a line.
+    let frame = grown(view.frame, 1.0);
+    if let PlanShape::Disc { centre, radius } = shape {
+        let circle = (view.point(*centre), radius * view.points_per_metre);
+        sheet.circle_within(frame, circle, stroke);
+    } else {
+        sheet.closed_within(frame, &shape.edge(view), stroke);
     }
 }
 
@@ -328,19 +341,34 @@ fn draw_bolt(sheet: &mut Sheet, view: &View, bolt: &PlanBolt) {
     let frame = grown(view.frame, 10.0);
     let radius = |metres: f64| (metres * view.points_per_metre).clamp(0.0, 2.0 * LARGEST);
     let ring = |sheet: &mut Sheet, metres: f64, stroke| {
-        sheet.closed_within(frame, &circle(centre, radius(metres)), stroke);
+        sheet.circle_within(frame, (centre, radius(metres)), stroke);
     };
     if let Some(contact) = bolt.contact_radius.filter(|r| r.is_finite()) {
         ring(sheet, contact, CONTACT);
     }
+    let large = radius(bolt.head_radius) > SMALL;
+    if large {
+        ring(sheet, bolt.head_radius, HALO);
+    }
     ring(sheet, bolt.head_radius, HEAD);
     sheet.area(frame.area(&circle(centre, radius(bolt.hole_radius))), PAPER);
-    ring(sheet, bolt.hole_radius, HOLE);
-    let reach = radius(bolt.head_radius) + 5.0;
+    ring(sheet, bolt.hole_radius, if large { HOLE } else { HEAD });
+    let radii = [radius(bolt.hole_radius), radius(bolt.head_radius)];
+    centre_mark(sheet, frame, centre, radii);
+}
+
+/// The centre lines of a hole: a small cross, a gap, and lines out past the head.
+fn centre_mark(sheet: &mut Sheet, frame: Frame, centre: [f64; 2], [hole, head]: [f64; 2]) {
+    let arm = (0.45 * hole).clamp(1.5, 6.0);
+    let (inner, reach) = (arm + 2.0, head.max(hole) + 4.0);
     for [dx, dy] in [[1.0, 0.0], [-1.0, 0.0], [0.0, 1.0], [0.0, -1.0]] {
-        // From the middle outwards, so that the dashes cross in a full stroke at the centre.
-        let end = [centre[0] + dx * reach, centre[1] + dy * reach];
-        sheet.line_within(frame, &[centre, end], CENTRE);
+        let at = |along: f64| [centre[0] + dx * along, centre[1] + dy * along];
+        if head > SMALL {
+            let line = [at(inner.max(hole + WIDE)), at(reach + 0.5)];
+            sheet.line_within(frame, &line, HALO);
+        }
+        sheet.line_within(frame, &[at(0.0), at(arm)], CENTRE);
+        sheet.line_within(frame, &[at(inner), at(reach)], CENTRE);
     }
 }
 
@@ -348,40 +376,39 @@ fn draw_bolt(sheet: &mut Sheet, view: &View, bolt: &PlanBolt) {
 fn draw_numbers(sheet: &mut Sheet, view: &View, bolts: &[PlanBolt]) {
     const BALLOON: f64 = 7.5;
     const MOST: usize = 100;
-    let heads: Vec<([f64; 2], f64)> = bolts
+    let shown: Vec<([f64; 2], [f64; 2])> = bolts
         .iter()
         .take(MOST)
         .map(|bolt| {
-            (
-                view.point(bolt.at),
-                bolt.head_radius * view.points_per_metre,
-            )
+            let outer = bolt.contact_radius.unwrap_or(0.0).max(bolt.head_radius);
+            let radii = [outer, bolt.head_radius].map(|r| r * view.points_per_metre);
+            (view.point(bolt.at), radii)
         })
         .collect();
     let mut taken: Vec<[f64; 2]> = Vec::new();
     let apart = |a: [f64; 2], b: [f64; 2]| (a[0] - b[0]).hypot(a[1] - b[1]);
-    for (index, (centre, head)) in heads.iter().enumerate() {
-        let place = [[1.0, -1.0], [-1.0, -1.0], [1.0, 1.0], [-1.0, 1.0]]
-            .map(|[dx, dy]| {
-                let away = (head + BALLOON + 2.0) * std::f64::consts::FRAC_1_SQRT_2;
-                [centre[0] + dx * away, centre[1] + dy * away]
+    for (index, (centre, radii)) in shown.iter().enumerate() {
+        // Outside the edge of contact where that is free, else beside the head.
+        let mut places = [0, 1].iter().flat_map(|kind| {
+            [[1.0, -1.0], [-1.0, -1.0], [1.0, 1.0], [-1.0, 1.0]].map(|[dx, dy]| {
+                let away = (radii[*kind] + BALLOON + 1.5) * std::f64::consts::FRAC_1_SQRT_2;
+                (*kind, [centre[0] + dx * away, centre[1] + dy * away])
             })
-            .into_iter()
-            .find(|p| {
-                grown(view.frame, -BALLOON - 1.0).holds(*p)
-                    && taken
-                        .iter()
-                        .all(|other| apart(*p, *other) > 2.0 * BALLOON + 1.0)
-                    && heads
-                        .iter()
-                        .enumerate()
-                        .all(|(other, (c, r))| other == index || apart(*p, *c) > r + BALLOON + 1.0)
-            });
-        let Some(place) = place else { continue };
+        });
+        let place = places.find(|(kind, p)| {
+            grown(view.frame, -BALLOON - 1.0).holds(*p)
+                && taken
+                    .iter()
+                    .all(|other| apart(*p, *other) > 2.0 * BALLOON + 1.0)
+                && shown.iter().enumerate().all(|(other, (c, r))| {
+                    other == index || apart(*p, *c) > r[*kind] + BALLOON + 1.0
+                })
+        });
+        let Some((_, place)) = place else { continue };
         taken.push(place);
         sheet.disc(place, BALLOON, PAPER);
         let around = grown(view.frame, 10.0);
-        sheet.closed_within(around, &circle(place, BALLOON), Stroke::solid(NARROW, INK));
+        sheet.circle_within(around, (place, BALLOON), Stroke::solid(NARROW, INK));
         let size = LABEL - 2.0;
         let lettering = Lettering::plain(size, INK, Anchor::Middle);
         let at = [place[0], place[1] + 0.36 * size];
@@ -389,7 +416,7 @@ fn draw_numbers(sheet: &mut Sheet, view: &View, bolts: &[PlanBolt]) {
     }
 }
 
-fn key(map: &PlanMap) -> Vec<(Sample, String)> {
+fn key(map: &PlanMap, colours: &Axis) -> Vec<(Sample, String)> {
     let mut items: Vec<(Sample, String)> = map
         .outlines
         .iter()
@@ -406,8 +433,13 @@ fn key(map: &PlanMap) -> Vec<(Sample, String)> {
     if map.heated.is_some() {
         items.push((Sample::Line(HEATED), "heated zone".into()));
     }
-    if map.scale == Scale::Linear && map.values.contains(&0.0) {
-        items.push((Sample::Patch(ramp::colour(0.0)), "no contact".into()));
+    let under = |value: &f64| value * map.factor < colours.low * (1.0 - 1e-9);
+    let lightest = Sample::Patch(ramp::colour(0.0));
+    if colours.spread == Spread::Linear && map.values.contains(&0.0) {
+        items.push((lightest, format!("no {}", map.quantity)));
+    } else if colours.spread == Spread::Logarithmic && map.values.iter().any(under) {
+        let text = format!("below {} {}", axis::plain(colours.low), map.unit);
+        items.push((lightest, text));
     }
     items
 }

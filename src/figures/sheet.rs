@@ -23,9 +23,9 @@ pub(super) const ACCENT: Colour = Colour(0xB5, 0x3F, 0x0E);
 pub(super) const PAPER: Colour = Colour(0xFF, 0xFF, 0xFF);
 
 /// Wide line of engineering drawings, points.
-pub(super) const WIDE: f64 = 1.25;
+pub(super) const WIDE: f64 = 1.5;
 /// Narrow line, half the wide one (ISO 128-2).
-pub(super) const NARROW: f64 = 0.6;
+pub(super) const NARROW: f64 = 0.75;
 
 /// Text size of labels, points.
 pub(super) const LABEL: f64 = 11.5;
@@ -70,6 +70,8 @@ pub(super) enum Mark {
     Area(Vec<[f64; 2]>, Colour),
     /// A filled circle: centre and radius.
     Disc([f64; 2], f64, Colour),
+    /// A circle: centre, radius and width of the line.
+    Ring([f64; 2], f64, f64, Colour),
     /// A text at a place.
     Text([f64; 2], String, Lettering),
 }
@@ -108,7 +110,7 @@ impl Sheet {
         let small = Lettering::plain(LABEL, GREY, Anchor::Start);
         let room = self.size[0] - 2.0 * MARGIN;
         let title = cleaned(title);
-        self.title = format!("{title}: {subtitle}");
+        self.title = cleaned(&format!("{title}: {subtitle}"));
         let mut baseline = 12.0;
         for line in bold.wrapped(&title, room, 2) {
             baseline += 18.0;
@@ -137,16 +139,61 @@ impl Sheet {
         }
     }
 
-    /// A closed line; the seam lies in the middle of the first side so that every corner is sharp.
+    /// A closed line with sharp corners.
     pub(super) fn closed_within(&mut self, frame: Frame, points: &[[f64; 2]], stroke: Stroke) {
         let [first, second, ..] = points else {
             return;
         };
+        let upright = (0..points.len()).all(|k| {
+            let (a, b) = (points[k], points[(k + 1) % points.len()]);
+            a[0] == b[0] || a[1] == b[1]
+        });
+        if upright {
+            // Side by side and half a line longer each, which the pixel backend keeps straight.
+            for k in 0..points.len() {
+                let (a, b) = (points[k], points[(k + 1) % points.len()]);
+                let reach = [0, 1].map(|axis| {
+                    let step = b[axis] - a[axis];
+                    if step == 0.0 {
+                        0.0
+                    } else {
+                        step.signum() * stroke.width / 2.0
+                    }
+                });
+                let from = [a[0] - reach[0], a[1] - reach[1]];
+                let to = [b[0] + reach[0], b[1] + reach[1]];
+                let around = Frame {
+                    left: frame.left - stroke.width,
+                    top: frame.top - stroke.width,
+                    right: frame.right + stroke.width,
+                    bottom: frame.bottom + stroke.width,
+                };
+                self.line_within(around, &[from, to], stroke);
+            }
+            return;
+        }
+        // The seam lies in the middle of a side, so that every corner is a joint.
         let seam = [(first[0] + second[0]) / 2.0, (first[1] + second[1]) / 2.0];
         let mut path = vec![seam];
         path.extend_from_slice(&points[1..]);
         path.extend([*first, seam]);
         self.line_within(frame, &path, stroke);
+    }
+
+    /// The part of a circle within a frame.
+    pub(super) fn circle_within(
+        &mut self,
+        frame: Frame,
+        (centre, radius): ([f64; 2], f64),
+        stroke: Stroke,
+    ) {
+        let corners = [-radius, radius].map(|r| [centre[0] + r, centre[1] + r]);
+        if stroke.dash.is_empty() && corners.iter().all(|&corner| frame.holds(corner)) {
+            self.marks
+                .push(Mark::Ring(centre, radius, stroke.width, stroke.colour));
+        } else {
+            self.closed_within(frame, &circle(centre, radius), stroke);
+        }
     }
 
     /// A filled area.
@@ -163,7 +210,7 @@ impl Sheet {
 
     /// A text; the place is its anchor on the baseline.
     pub(super) fn text(&mut self, at: [f64; 2], content: impl Into<String>, lettering: Lettering) {
-        let content = content.into();
+        let content = cleaned(&content.into());
         if !content.is_empty() {
             self.marks.push(Mark::Text(at, content, lettering));
         }
@@ -223,7 +270,8 @@ fn dashes(points: &[[f64; 2]], pattern: &[f64]) -> Vec<Vec<[f64; 2]>> {
     pieces
 }
 
-/// The rectangle a text covers: left, top, right, bottom.
+/// The rectangle a text covers, for the tests of the layout.
+#[cfg(test)]
 pub(super) fn text_box(at: [f64; 2], content: &str, lettering: Lettering) -> Frame {
     let width = lettering.width(content);
     let before = match lettering.anchor {

@@ -8,10 +8,10 @@ use crate::{
         clip::Frame,
         drawable,
         flags::{Flag, Flags},
-        legend::{Sample, hatch, legend},
+        legend::{Sample, hatch, hollow_dot, legend},
         lettering::{Anchor, Lettering},
         ramp,
-        sheet::{ACCENT, Colour, INK, LABEL, NARROW, PAPER, Sheet, Stroke, WIDE},
+        sheet::{ACCENT, Colour, INK, LABEL, NARROW, Sheet, Stroke, WIDE},
     },
     joint::Limit,
 };
@@ -149,8 +149,7 @@ pub(super) fn draw(sweep: &TorqueSweep) -> Result<Sheet, FigureError> {
             upper.bottom - upper_axis.place(value) * upper.height(),
         ];
         if upper.holds(place) {
-            sheet.disc(place, 4.5, nominal().colour);
-            sheet.disc(place, 2.5, PAPER);
+            hollow_dot(&mut sheet, place, nominal().colour);
         }
     }
 
@@ -173,7 +172,7 @@ fn nominal() -> Stroke {
 }
 
 fn band_colour() -> Colour {
-    ramp::colour(0.26)
+    Colour(0xCB, 0xDD, 0xE8)
 }
 
 /// The points of one result, torque rising; bands without draws have no width.
@@ -211,18 +210,25 @@ fn extent(points: &[Point]) -> (f64, f64) {
 fn upper_axis(points: &[Point], limit: Option<f64>) -> Axis {
     let (low, high) = extent(points);
     let span = (high - low).max(0.1 * high.abs());
-    match limit {
-        Some(limit) if limit > low - span && limit < high + span => {
-            Axis::around(low.min(limit), high.max(limit))
-        }
-        _ => Axis::around(low, high),
+    let near = |limit: &f64| {
+        (*limit > low - span && *limit < high + span)
+            || (low > 0.0 && *limit > low / 3.0 && *limit < 3.0 * high)
+    };
+    match limit.filter(near) {
+        Some(limit) => resistance_axis(low.min(limit), high.max(limit)),
+        None => resistance_axis(low, high),
     }
 }
 
 fn lower_axis(points: &[Point]) -> Axis {
     let (low, high) = extent(points);
-    if low > 0.0 && high > 8.0 * low {
-        Axis::logarithmic(low / 1.1, high * 1.1)
+    resistance_axis(low, high)
+}
+
+/// Logarithmic where an even axis would flatten the useful end of the curve.
+fn resistance_axis(low: f64, high: f64) -> Axis {
+    if low > 0.0 && high > 6.0 * low {
+        Axis::logarithmic(low / 1.15, high * 1.15)
     } else {
         Axis::around(low, high)
     }
@@ -235,7 +241,7 @@ fn torque_flags(
 ) -> Result<Vec<Flag>, FigureError> {
     let mut flags = vec![Flag {
         x: across(sweep.stated),
-        text: format!("stated {} N\u{a0}m", axis::significant(sweep.stated, 3)),
+        text: format!("stated {} N\u{a0}m", axis::plain(sweep.stated)),
         stroke: STATED,
     }];
     if let Some((largest, limit)) = sweep.largest {
@@ -243,10 +249,7 @@ fn torque_flags(
         if (x_axis.low..=x_axis.high).contains(&largest) {
             flags.push(Flag {
                 x: across(largest),
-                text: format!(
-                    "largest {} N\u{a0}m: {limit}",
-                    axis::significant(largest, 3)
-                ),
+                text: format!("largest {} N\u{a0}m: {limit}", axis::plain(largest)),
                 stroke: LARGEST,
             });
         }
@@ -263,10 +266,7 @@ fn requirement_note(limit: f64, bound: Limit) -> [String; 2] {
         Limit::Most => '≤',
         Limit::Least => '≥',
     };
-    [
-        "required".into(),
-        format!("{sign} {}", axis::significant(limit, 3)),
-    ]
+    ["required".into(), format!("{sign} {}", axis::plain(limit))]
 }
 
 /// The requirement as a line with a note beside the frame, or an arrow towards it from the edge.
@@ -330,11 +330,8 @@ fn key(sweep: &TorqueSweep, barred: bool) -> Vec<(Sample, String)> {
         (Sample::Line(nominal()), "nominal".to_owned())
     }];
     items.push((
-        Sample::Dot(nominal().colour),
-        format!(
-            "lowest resistance, at {} N\u{a0}m",
-            axis::significant(sweep.best, 3)
-        ),
+        Sample::HollowDot(nominal().colour),
+        format!("lowest resistance, at {} N\u{a0}m", axis::plain(sweep.best)),
     ));
     if barred {
         items.push((Sample::Hatch, "beyond the largest torque".into()));

@@ -14,17 +14,7 @@ const FINENESS: f64 = 2.0;
 pub(super) fn picture(map: &PlanMap, view: &View, colours: &Axis) -> Picture {
     let size = [view.frame.width(), view.frame.height()]
         .map(|length| ((length * FINENESS).round() as usize).max(1));
-    let field = Field {
-        map,
-        holes: map
-            .bolts
-            .iter()
-            .map(|bolt| PlanShape::Disc {
-                centre: bolt.at,
-                radius: bolt.hole_radius,
-            })
-            .collect(),
-    };
+    let field = Field::new(map);
     let mut indices = Vec::with_capacity(size[0] * size[1]);
     for row in 0..size[1] {
         let v = 1.0 - (row as f64 + 0.5) / size[1] as f64;
@@ -47,89 +37,150 @@ pub(super) fn picture(map: &PlanMap, view: &View, colours: &Axis) -> Picture {
     }
 }
 
-struct Field<'a> {
-    map: &'a PlanMap,
-    holes: Vec<PlanShape>,
+/// What a cell shows; values of different kinds are never mixed.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+enum Kind {
+    Nothing,
+    Zero,
+    Value,
 }
 
-impl Field<'_> {
-    /// The value at a place given as shares of the window, bilinear between cell centres.
+/// The field with what is needed to cut it.
+struct Field<'a> {
+    map: &'a PlanMap,
+    /// For each cell with a neighbour of another kind, what parts the cells around it.
+    borders: Vec<Option<Border>>,
+}
+
+/// The edges that part the cells around one cell.
+struct Border {
+    edges: Vec<PlanShape>,
+    /// The cell itself and its neighbours with the side of every edge on which each centre lies.
+    cells: Vec<([i64; 2], Vec<bool>)>,
+}
+
+impl<'a> Field<'a> {
+    fn new(map: &'a PlanMap) -> Self {
+        let holes = map.bolts.iter().map(|bolt| (bolt.at, bolt.hole_radius));
+        let contacts = map
+            .bolts
+            .iter()
+            .filter_map(|bolt| Some((bolt.at, bolt.contact_radius?)));
+        let mut edges: Vec<PlanShape> = map.outlines.iter().map(|o| o.shape.clone()).collect();
+        edges.extend(
+            holes
+                .chain(contacts)
+                .map(|(centre, radius)| PlanShape::Disc { centre, radius }),
+        );
+        let mut field = Self {
+            map,
+            borders: Vec::new(),
+        };
+        let [columns, rows] = map.size.map(|k| k as i64);
+        field.borders = (0..rows)
+            .flat_map(|row| (0..columns).map(move |column| [column, row]))
+            .map(|cell| field.border(cell, &edges))
+            .collect();
+        field
+    }
+
+    fn border(&self, home: [i64; 2], edges: &[PlanShape]) -> Option<Border> {
+        let kind = self.kind(home);
+        block(home).find(|cell| self.kind(*cell) != kind)?;
+        let size = self.map.size.map(|k| k as f64);
+        let centre =
+            |[x, y]: [i64; 2]| self.place([(x as f64 + 0.5) / size[0], (y as f64 + 0.5) / size[1]]);
+        let centres: Vec<[f64; 2]> = block(home).map(centre).collect();
+        // An edge that no two centres lie across is finer than the cells and parts nothing.
+        let parting: Vec<PlanShape> = edges
+            .iter()
+            .filter(|edge| {
+                let inside = centres.iter().filter(|c| edge.covers(**c)).count();
+                inside > 0 && inside < centres.len()
+            })
+            .cloned()
+            .collect();
+        let cells = block(home)
+            .zip(&centres)
+            .map(|(cell, c)| (cell, parting.iter().map(|edge| edge.covers(*c)).collect()))
+            .collect();
+        Some(Border {
+            edges: parting,
+            cells,
+        })
+    }
+
+    /// The value at a place given as shares of the window, bilinear between cells of one kind.
     fn at(&self, share: [f64; 2]) -> Option<f64> {
         let size = self.map.size;
         let cell = [0, 1].map(|k| share[k] * size[k] as f64 - 0.5);
-        let home = [0, 1].map(|k| (cell[k].round().max(0.0) as usize).min(size[k] - 1));
-        let nearest = self.nearest(cell, home)?;
-        if self.at_an_edge(home) && !self.same_side(share, nearest) {
-            return None;
+        let home = [0, 1].map(|k| (cell[k].round() as i64).clamp(0, size[k] as i64 - 1));
+        let border = self.borders[home[1] as usize * size[0] + home[0] as usize].as_ref();
+        if border.is_none() && self.kind(home) != Kind::Value {
+            return self.value(home);
         }
-        let base = cell.map(f64::floor);
+        let source = border.map_or(home, |border| self.partner(border, (share, cell), home));
+        let kind = self.kind(source);
+        let own = self.value(source)?;
+        let base = cell.map(|c| c.floor() as i64);
         let (mut sum, mut weights) = (0.0, 0.0);
-        for [dx, dy] in [[0.0, 0.0], [1.0, 0.0], [0.0, 1.0], [1.0, 1.0]] {
+        for [dx, dy] in [[0, 0], [1, 0], [0, 1], [1, 1]] {
             let corner = [base[0] + dx, base[1] + dy];
-            let weight = (1.0 - (cell[0] - corner[0]).abs()) * (1.0 - (cell[1] - corner[1]).abs());
-            if let Some(value) = self.value(corner) {
-                sum += weight * value;
-                weights += weight;
+            let weight = [0, 1].map(|k| 1.0 - (cell[k] - corner[k] as f64).abs());
+            if self.kind(corner) == kind {
+                sum += weight[0] * weight[1] * self.value(corner).unwrap_or(0.0);
+                weights += weight[0] * weight[1];
             }
         }
-        if weights > 1e-9 {
-            Some(sum / weights)
-        } else {
-            self.value(nearest.map(|k| k as f64))
-        }
+        Some(if weights > 1e-9 { sum / weights } else { own })
     }
 
-    fn value(&self, [column, row]: [f64; 2]) -> Option<f64> {
-        let [columns, rows] = self.map.size;
-        let inside = column >= 0.0 && row >= 0.0 && column < columns as f64 && row < rows as f64;
-        let value = *self
-            .map
-            .values
-            .get(inside.then_some(row as usize * columns + column as usize)?)?;
-        (!value.is_nan()).then_some(value)
-    }
-
-    /// The cell of the place, or the nearest neighbour of it that holds a value.
-    fn nearest(&self, cell: [f64; 2], home: [usize; 2]) -> Option<[usize; 2]> {
-        let distance = |c: [f64; 2]| (c[0] - cell[0]).hypot(c[1] - cell[1]);
-        let own = home.map(|k| k as f64);
-        if self.value(own).is_some() {
-            return Some(home);
-        }
-        neighbours(own)
-            .filter(|c| self.value(*c).is_some())
-            .min_by(|a, b| distance(*a).total_cmp(&distance(*b)))
-            .map(|c| c.map(|k| k as usize))
-    }
-
-    fn at_an_edge(&self, home: [usize; 2]) -> bool {
-        let own = home.map(|k| k as f64);
-        self.value(own).is_none() || neighbours(own).any(|c| self.value(c).is_none())
-    }
-
-    /// Whether a place and the centre of a cell lie on the same side of every edge.
+    /// The nearest cell whose centre lies on the same side of every parting edge as the place.
     ///
-    /// Cells know only whether their centre holds a value; the drawn edges cut them to shape.
-    fn same_side(&self, share: [f64; 2], cell: [usize; 2]) -> bool {
-        let [left, low, right, up] = self.map.window;
-        let place = |u: f64, v: f64| [left + u * (right - left), low + v * (up - low)];
-        let size = self.map.size.map(|k| k as f64);
-        let here = place(share[0], share[1]);
-        let centre = place(
-            (cell[0] as f64 + 0.5) / size[0],
-            (cell[1] as f64 + 0.5) / size[1],
-        );
-        self.map
-            .outlines
+    /// A cell knows only what its centre is; the drawn edges cut the cells to shape.
+    fn partner(
+        &self,
+        border: &Border,
+        (share, cell): ([f64; 2], [f64; 2]),
+        home: [i64; 2],
+    ) -> [i64; 2] {
+        let here = self.place(share);
+        let sides: Vec<bool> = border.edges.iter().map(|edge| edge.covers(here)).collect();
+        let distance = |c: &[i64; 2]| (c[0] as f64 - cell[0]).hypot(c[1] as f64 - cell[1]);
+        border
+            .cells
             .iter()
-            .map(|outline| &outline.shape)
-            .chain(&self.holes)
-            .all(|shape| shape.covers(here) == shape.covers(centre))
+            .filter(|(_, own)| *own == sides)
+            .map(|(cell, _)| *cell)
+            .min_by(|a, b| distance(a).total_cmp(&distance(b)))
+            .unwrap_or(home)
+    }
+
+    fn value(&self, [column, row]: [i64; 2]) -> Option<f64> {
+        let [columns, rows] = self.map.size.map(|k| k as i64);
+        let inside = (0..columns).contains(&column) && (0..rows).contains(&row);
+        let at = inside.then_some((row * columns + column) as usize)?;
+        self.map.values.get(at).copied().filter(|v| !v.is_nan())
+    }
+
+    fn kind(&self, cell: [i64; 2]) -> Kind {
+        match self.value(cell) {
+            None => Kind::Nothing,
+            Some(0.0) => Kind::Zero,
+            Some(_) => Kind::Value,
+        }
+    }
+
+    fn place(&self, share: [f64; 2]) -> [f64; 2] {
+        let [left, low, right, up] = self.map.window;
+        [
+            left + share[0] * (right - left),
+            low + share[1] * (up - low),
+        ]
     }
 }
 
-fn neighbours([column, row]: [f64; 2]) -> impl Iterator<Item = [f64; 2]> {
-    (0..9)
-        .filter(|k| *k != 4)
-        .map(move |k| [column + f64::from(k % 3 - 1), row + f64::from(k / 3 - 1)])
+/// A cell and its eight neighbours.
+fn block([column, row]: [i64; 2]) -> impl Iterator<Item = [i64; 2]> {
+    (0..9).map(move |k| [column + k % 3 - 1, row + k / 3 - 1])
 }

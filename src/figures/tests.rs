@@ -1,0 +1,158 @@
+//! The layout of every kind of figure: texts lie on the sheet and never on each other.
+
+use proptest::prelude::*;
+
+use crate::{
+    estimate::{Band, TorquePoint, TorqueSweep},
+    figures::{
+        CumulativePlot, Curve, Drawing, PlanBolt, PlanMap, PlanOutline, PlanShape, RadiusMark,
+        Scale, sheet as draw,
+        sheet::{Mark, Sheet, text_box},
+    },
+    joint::Limit,
+};
+
+fn texts_are_clear(sheet: &Sheet) -> Result<(), String> {
+    let boxes: Vec<_> = sheet
+        .marks
+        .iter()
+        .filter_map(|mark| match mark {
+            Mark::Text(at, content, lettering) => {
+                Some((content, text_box(*at, content, *lettering)))
+            }
+            _ => None,
+        })
+        .collect();
+    for (index, (text, a)) in boxes.iter().enumerate() {
+        let [width, height] = sheet.size;
+        if a.left < 0.0 || a.top < 0.0 || a.right > width || a.bottom > height {
+            return Err(format!("{text:?} leaves the sheet: {a:?}"));
+        }
+        for (other, b) in &boxes[..index] {
+            // Boxes include room for accents and descenders, so a hair of overlap shows nothing.
+            let across = a.right.min(b.right) - a.left.max(b.left);
+            let down = a.bottom.min(b.bottom) - a.top.max(b.top);
+            if across > 0.5 && down > 0.5 {
+                return Err(format!("{text:?} lies on {other:?}"));
+            }
+        }
+    }
+    Ok(())
+}
+
+fn plan(window: [f64; 2], factor: f64, scale: Scale, bolts: usize) -> PlanMap {
+    PlanMap {
+        title: "A joint with a title that is long enough to be broken into lines".into(),
+        window: [0.0, 0.0, window[0], window[1]],
+        size: [12, 8],
+        values: (0..96).map(|k| f64::from(k % 13) * factor).collect(),
+        quantity: "contact pressure".into(),
+        unit: "MPa".into(),
+        factor: 1.0,
+        scale,
+        outlines: vec![PlanOutline {
+            name: "base plate".into(),
+            shape: PlanShape::Rectangle {
+                corner: [0.0, 0.0],
+                size: window,
+            },
+        }],
+        bolts: (0..bolts)
+            .map(|k| PlanBolt {
+                at: [
+                    window[0] * (k as f64 + 0.5) / bolts as f64,
+                    window[1] * ((k * 7 % 5) as f64 + 0.5) / 5.0,
+                ],
+                hole_radius: 1e-3,
+                head_radius: 2e-3,
+                contact_radius: Some(4e-3),
+            })
+            .collect(),
+        heated: None,
+    }
+}
+
+fn sweep(stated: f64, largest: f64, required: f64, size: f64) -> TorqueSweep {
+    let band = |nominal: f64| Band {
+        low: Some(0.8 * nominal),
+        nominal,
+        high: Some(1.3 * nominal),
+    };
+    TorqueSweep {
+        title: "Converter box on a panel".into(),
+        group: "M4 socket, 6 places".into(),
+        stated,
+        largest: Some((largest, "pressure under the head")),
+        best: 3.0,
+        points: (1..=20)
+            .map(|k| {
+                let torque = f64::from(k) / 5.0;
+                TorquePoint {
+                    torque,
+                    force: band(1000.0 * torque),
+                    source_to_sink: band(size * (0.4 + 0.3 / torque)),
+                    contact: band(size * 0.3 / torque),
+                    added_by_joint: band(size * 0.3 / torque),
+                    strength_use: None,
+                    passes: torque < largest,
+                }
+            })
+            .collect(),
+        required: Some((required * size, Limit::Most)),
+        cautions: Vec::new(),
+    }
+}
+
+proptest! {
+    #![proptest_config(ProptestConfig::with_cases(48))]
+
+    #[test]
+    fn texts_of_plans_are_clear(
+        width in -3.0..0.5_f64,
+        aspect in -1.5..1.5_f64,
+        size in -12.0..12.0_f64,
+        logarithmic: bool,
+        bolts in 0..12_usize,
+    ) {
+        let window = [10_f64.powf(width), 10_f64.powf(width + aspect)];
+        let scale = if logarithmic { Scale::Logarithmic } else { Scale::Linear };
+        let sheet = draw(&Drawing::Plan(plan(window, 10_f64.powf(size), scale, bolts))).unwrap();
+        prop_assert_eq!(texts_are_clear(&sheet), Ok(()));
+    }
+
+    #[test]
+    fn texts_of_sweeps_are_clear(
+        stated in 0.1..4.0_f64,
+        largest in 0.1..5.0_f64,
+        required in 0.01..100.0_f64,
+        size in -9.0..9.0_f64,
+    ) {
+        let sheet = draw(&Drawing::Torque(sweep(stated, largest, required, 10_f64.powf(size))));
+        prop_assert_eq!(texts_are_clear(&sheet.unwrap()), Ok(()));
+    }
+
+    #[test]
+    fn texts_of_cumulative_plots_are_clear(
+        totals in prop::collection::vec(0.0..50.0_f64, 1..14),
+        radii in prop::collection::vec(0.0..12e-3_f64, 0..5),
+        size in -9.0..9.0_f64,
+    ) {
+        let plot = CumulativePlot {
+            title: "Round pair".into(),
+            curves: totals
+                .iter()
+                .enumerate()
+                .map(|(k, total)| Curve {
+                    label: format!("bolt {}", k + 1),
+                    points: vec![(2e-3, 0.0), (10e-3, total * 10_f64.powf(size))],
+                })
+                .collect(),
+            marks: radii
+                .iter()
+                .map(|radius| RadiusMark { name: "edge of contact".into(), radius: *radius })
+                .collect(),
+        };
+        let sheet = draw(&Drawing::Cumulative(plot)).unwrap();
+        prop_assert_eq!(texts_are_clear(&sheet), Ok(()));
+    }
+}

@@ -1,0 +1,427 @@
+//! Figures as files: well formed, complete, repeatable, and errors instead of panics.
+
+use proptest::prelude::*;
+use ringsum::{
+    estimate::{Band, FieldMap, TorquePoint, TorqueSweep},
+    figures::{
+        CumulativePlot, Curve, Drawing, FigureError, Format, PlanBolt, PlanMap, PlanOutline,
+        PlanShape, RadiusMark, png, render, svg,
+    },
+    joint::Limit,
+};
+
+const HOSTILE: &str =
+    "<script>alert(1)</script> & \"quoted\" 'joint' ]]> \u{0}\u{7}\u{FFFE} ü 漢 \u{1F529}";
+
+fn field() -> FieldMap {
+    let pressure: Vec<f64> = (0..24 * 16)
+        .map(|k| match k {
+            100 => f64::NAN,
+            _ => 1e6 * f64::from(k % 24),
+        })
+        .collect();
+    FieldMap {
+        window: [0.0, 0.0, 0.06, 0.04],
+        size: [24, 16],
+        conductance: pressure.iter().map(|p| p / 1e3).collect(),
+        pressure,
+    }
+}
+
+fn furnished(mut map: PlanMap) -> PlanMap {
+    map.outlines = vec![
+        PlanOutline {
+            name: "base plate".into(),
+            shape: PlanShape::Rectangle {
+                corner: [0.005, 0.005],
+                size: [0.05, 0.03],
+            },
+        },
+        PlanOutline {
+            name: "panel".into(),
+            shape: PlanShape::Disc {
+                centre: [0.03, 0.02],
+                radius: 0.02,
+            },
+        },
+    ];
+    map.bolts = [[0.012, 0.012], [0.048, 0.012], [0.03, 0.03]]
+        .map(|at| PlanBolt {
+            at,
+            hole_radius: 2.2e-3,
+            head_radius: 4e-3,
+            contact_radius: Some(7e-3),
+        })
+        .to_vec();
+    map.heated = Some(PlanShape::Polygon(vec![
+        [0.02, 0.01],
+        [0.04, 0.01],
+        [0.03, 0.03],
+    ]));
+    map
+}
+
+fn cumulative(curves: usize) -> CumulativePlot {
+    CumulativePlot {
+        title: "Round pair".into(),
+        curves: (1..=curves)
+            .map(|k| Curve {
+                label: format!("bolt {k}"),
+                points: (0..20)
+                    .map(|r| (1e-3 * f64::from(r + 2), k as f64 * f64::from(r)))
+                    .collect(),
+            })
+            .collect(),
+        marks: vec![RadiusMark {
+            name: "edge of contact".into(),
+            radius: 9e-3,
+        }],
+    }
+}
+
+fn sweep() -> TorqueSweep {
+    let band = |nominal: f64| Band {
+        low: Some(0.8 * nominal),
+        nominal,
+        high: Some(1.3 * nominal),
+    };
+    TorqueSweep {
+        title: "Converter box".into(),
+        group: "M4 socket, 6 places".into(),
+        stated: 2.2,
+        largest: Some((2.9, "yield of the bolt")),
+        best: 2.8,
+        points: (1..=16)
+            .map(|k| {
+                let torque = f64::from(k) / 4.0;
+                TorquePoint {
+                    torque,
+                    force: band(1000.0 * torque),
+                    source_to_sink: band(0.4 + 0.3 / torque),
+                    contact: band(0.3 / torque),
+                    added_by_joint: band(0.3 / torque),
+                    strength_use: None,
+                    passes: torque < 2.9,
+                }
+            })
+            .collect(),
+        required: Some((0.8, Limit::Most)),
+        cautions: Vec::new(),
+    }
+}
+
+fn every_drawing() -> Vec<Drawing> {
+    vec![
+        Drawing::Plan(furnished(PlanMap::pressure("Box on panel", &field()))),
+        Drawing::Plan(furnished(PlanMap::conductance("Box on panel", &field()))),
+        Drawing::Cumulative(cumulative(1)),
+        Drawing::Cumulative(cumulative(5)),
+        Drawing::Torque(sweep()),
+    ]
+}
+
+/// Content of every text element, in order; panics where tags or quotes do not balance.
+fn texts(document: &str) -> Vec<String> {
+    let mut open: Vec<&str> = Vec::new();
+    let mut found = Vec::new();
+    let mut rest = document;
+    while let Some(start) = rest.find('<') {
+        let content = rest[..start].trim();
+        assert!(!content.contains('>'), "a bare > in {content:?}");
+        if open.last() == Some(&"text") {
+            found.push(content.to_owned());
+        }
+        let end = start + rest[start..].find('>').expect("every tag closes");
+        let tag = &rest[start + 1..end];
+        assert_eq!(tag.matches('"').count() % 2, 0, "quotes of {tag:?}");
+        if let Some(name) = tag.strip_prefix('/') {
+            assert_eq!(open.pop(), Some(name));
+        } else if !tag.ends_with('/') {
+            open.push(tag.split(' ').next().unwrap());
+        }
+        rest = &rest[end + 1..];
+    }
+    assert!(open.is_empty(), "{open:?} stay open");
+    found
+}
+
+fn holds(texts: &[String], part: &str) -> bool {
+    texts.iter().any(|text| text.contains(part))
+}
+
+/// Width, height and whether the pixels are of more than one colour.
+fn decoded(bytes: &[u8]) -> (u32, u32, bool) {
+    let mut reader = png::Decoder::new(std::io::Cursor::new(bytes))
+        .read_info()
+        .unwrap();
+    let mut pixels = vec![0; reader.output_buffer_size().unwrap()];
+    let info = reader.next_frame(&mut pixels).unwrap();
+    let varied = pixels.iter().any(|value| *value != pixels[0]);
+    (info.width, info.height, varied)
+}
+
+#[test]
+fn a_pressure_map_is_complete() {
+    let document = svg(&every_drawing()[0]).unwrap();
+    let texts = texts(&document);
+    for part in [
+        "Box on panel",
+        "contact pressure, MPa",
+        "x, mm",
+        "y, mm",
+        "base plate",
+        "panel",
+        "hole",
+        "head or washer",
+        "edge of contact",
+        "heated zone",
+        "at most 23.0 MPa",
+    ] {
+        assert!(holds(&texts, part), "{part} is missing in {texts:?}");
+    }
+    // Every bolt of a group carries its number.
+    for number in ["1", "2", "3"] {
+        assert!(texts.iter().any(|text| text == number));
+    }
+    // The field and the bar of its colours.
+    assert_eq!(document.matches("data:image/png;base64,").count(), 2);
+    assert!(!document.contains("font-family=\"\""));
+    assert!(document.contains("sans-serif"));
+}
+
+#[test]
+fn a_conductance_map_names_its_unit_and_decades() {
+    let texts = texts(&svg(&every_drawing()[1]).unwrap());
+    assert!(holds(&texts, "local conductance, W/(m²\u{a0}K)"));
+    assert!(holds(&texts, "10\u{2009}000") && holds(&texts, "1000"));
+    // The field holds zeros, which no logarithmic bar can show.
+    assert!(holds(&texts, "below"));
+}
+
+#[test]
+fn one_curve_has_an_axis_of_shares_and_several_have_names() {
+    let one = texts(&svg(&Drawing::Cumulative(cumulative(1))).unwrap());
+    assert!(holds(&one, "share of the total, %") && holds(&one, "conductance, W/K"));
+    assert!(holds(&one, "distance from the bolt axis, mm") && holds(&one, "edge of contact 9 mm"));
+    let five = texts(&svg(&Drawing::Cumulative(cumulative(5))).unwrap());
+    assert!(!holds(&five, "share of the total"));
+    for k in 1..=5 {
+        assert!(holds(&five, &format!("bolt {k}: ")));
+    }
+}
+
+#[test]
+fn a_sweep_shows_stated_largest_best_and_required() {
+    let texts = texts(&svg(&Drawing::Torque(sweep())).unwrap());
+    for part in [
+        "source to sink, K/W",
+        "contact only, K/W",
+        "torque, N\u{a0}m",
+        "stated 2.2 N\u{a0}m",
+        "largest 2.9 N\u{a0}m: yield of the bolt",
+        "lowest resistance, at 2.8 N\u{a0}m",
+        "≤ 0.8",
+    ] {
+        assert!(holds(&texts, part), "{part} is missing in {texts:?}");
+    }
+}
+
+#[test]
+fn both_formats_show_the_same_sheet() {
+    for drawing in every_drawing() {
+        let document = svg(&drawing).unwrap();
+        texts(&document);
+        let number = |name: &str| -> u32 {
+            let from = document.find(name).unwrap() + name.len();
+            let digits = document[from..].split('"').next().unwrap();
+            digits.parse().unwrap()
+        };
+        let (width, height, varied) = decoded(&png(&drawing).unwrap());
+        // Two pixels to the nominal one.
+        assert_eq!(
+            (width, height),
+            (2 * number(" width=\""), 2 * number(" height=\""))
+        );
+        assert!(varied);
+    }
+}
+
+#[test]
+fn the_same_drawing_gives_the_same_bytes() {
+    for drawing in every_drawing() {
+        for format in [Format::Svg, Format::Png] {
+            assert_eq!(render(&drawing, format), render(&drawing.clone(), format));
+        }
+    }
+}
+
+#[test]
+fn hostile_titles_stay_text() {
+    for mut drawing in every_drawing() {
+        match &mut drawing {
+            Drawing::Plan(map) => {
+                map.title = HOSTILE.into();
+                map.outlines[0].name = HOSTILE.into();
+                map.unit = HOSTILE.into();
+            }
+            Drawing::Cumulative(plot) => {
+                plot.title = HOSTILE.repeat(40);
+                plot.curves[0].label = HOSTILE.into();
+                plot.marks[0].name = HOSTILE.into();
+            }
+            Drawing::Torque(sweep) => {
+                sweep.title = HOSTILE.into();
+                sweep.group = "x".repeat(5000);
+            }
+        }
+        let document = svg(&drawing).unwrap();
+        texts(&document);
+        assert!(!document.contains("<script"));
+        assert!(document.contains("&lt;script&gt;"));
+        let control = |c: char| c.is_control() && c != '\n';
+        assert!(!document.contains(control) && !document.contains('\u{FFFE}'));
+        decoded(&png(&drawing).unwrap());
+    }
+}
+
+#[test]
+fn what_cannot_be_drawn_is_an_error() {
+    let map = || PlanMap::pressure("", &field());
+    let with = |change: &dyn Fn(&mut PlanMap)| {
+        let mut changed = map();
+        change(&mut changed);
+        svg(&Drawing::Plan(changed))
+    };
+    assert_eq!(
+        with(&|m| m.values.fill(f64::NAN)),
+        Err(FigureError::Empty("the field"))
+    );
+    assert_eq!(
+        with(&|m| m.values[3] = f64::INFINITY),
+        Err(FigureError::NotFinite("the field"))
+    );
+    assert_eq!(
+        with(&|m| m.size = [usize::MAX, 2]),
+        Err(FigureError::Shape("the field"))
+    );
+    assert_eq!(
+        with(&|m| m.window[2] = m.window[0]),
+        Err(FigureError::Shape("the window"))
+    );
+    assert_eq!(
+        with(&|m| m.window[2] = f64::NAN),
+        Err(FigureError::NotFinite("the window"))
+    );
+    assert_eq!(
+        svg(&Drawing::Cumulative(cumulative(0))),
+        Err(FigureError::Empty("the curves"))
+    );
+    let mut empty = sweep();
+    empty.points.clear();
+    assert_eq!(
+        svg(&Drawing::Torque(empty)),
+        Err(FigureError::Empty("the sweep"))
+    );
+    let mut lost = sweep();
+    lost.points[2].contact.nominal = f64::NAN;
+    assert_eq!(
+        svg(&Drawing::Torque(lost)),
+        Err(FigureError::NotFinite("the sweep"))
+    );
+}
+
+#[test]
+fn lone_and_level_data_are_drawn() {
+    let mut one = sweep();
+    one.points.truncate(1);
+    let mut level = cumulative(1);
+    level.curves[0].points = vec![(3e-3, 0.0)];
+    let mut map = PlanMap::conductance("level", &field());
+    map.values.fill(0.0);
+    let mut cell = PlanMap::pressure("one cell", &field());
+    (cell.size, cell.values) = ([1, 1], vec![7e6]);
+    for drawing in [
+        Drawing::Torque(one),
+        Drawing::Cumulative(level),
+        Drawing::Plan(map),
+        Drawing::Plan(cell),
+    ] {
+        texts(&svg(&drawing).unwrap());
+        decoded(&png(&drawing).unwrap());
+    }
+}
+
+fn wild() -> impl Strategy<Value = f64> {
+    prop_oneof![
+        4 => -1.0..1.0_f64,
+        2 => any::<f64>(),
+        1 => Just(f64::NAN),
+        1 => Just(f64::INFINITY),
+        1 => Just(f64::MAX),
+        1 => Just(f64::MIN_POSITIVE),
+        1 => Just(0.0),
+    ]
+}
+
+proptest! {
+    #![proptest_config(ProptestConfig::with_cases(32))]
+
+    #[test]
+    fn no_numbers_make_a_figure_panic(
+        numbers in prop::collection::vec(wild(), 60),
+        title in ".{0,40}",
+        tame: bool,
+    ) {
+        // Half of the cases keep the frame sane, so that wild contents are reached and drawn.
+        let n = |k: usize| numbers[k % numbers.len()];
+        let frame = |k: usize, sane: f64| if tame { sane } else { n(k) };
+        let map = PlanMap {
+            title: title.clone(),
+            window: [frame(0, 0.0), frame(1, 0.0), frame(2, 0.05), frame(3, 0.03)],
+            size: [4, 3],
+            values: (10..22).map(|k| frame(k, n(k).clamp(-1e9, 1e9))).collect(),
+            factor: frame(4, 1.0),
+            outlines: vec![
+                PlanOutline {
+                    name: title.clone(),
+                    shape: PlanShape::Polygon(vec![[n(5), n(6)], [n(7), n(8)], [n(9), n(10)]]),
+                },
+                PlanOutline {
+                    name: title.clone(),
+                    shape: PlanShape::Disc { centre: [n(22), n(23)], radius: n(24) },
+                },
+            ],
+            bolts: (0..3)
+                .map(|k| PlanBolt {
+                    at: [n(25 + k), n(28 + k)],
+                    hole_radius: n(31 + k),
+                    head_radius: n(34 + k),
+                    contact_radius: Some(n(37 + k)),
+                })
+                .collect(),
+            heated: Some(PlanShape::Rectangle { corner: [n(40), n(41)], size: [n(42), n(43)] }),
+            ..PlanMap::conductance("", &field())
+        };
+        let plot = CumulativePlot {
+            title: title.clone(),
+            curves: vec![Curve {
+                label: title.clone(),
+                points: (0..8).map(|k| (n(2 * k), n(2 * k + 1))).collect(),
+            }],
+            marks: vec![RadiusMark { name: title, radius: n(44) }],
+        };
+        let mut torque = sweep();
+        torque.stated = n(45);
+        torque.best = n(46);
+        torque.largest = Some((n(47), "yield"));
+        torque.required = Some((n(48), Limit::Least));
+        torque.points[3].torque = n(49);
+        torque.points[5].contact.high = Some(n(50));
+        torque.points[6].source_to_sink.nominal = n(51);
+        for drawing in [Drawing::Plan(map), Drawing::Cumulative(plot), Drawing::Torque(torque)] {
+            if let Ok(document) = svg(&drawing) {
+                texts(&document);
+            }
+        }
+    }
+}
