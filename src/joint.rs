@@ -15,6 +15,7 @@ mod fasteners;
 mod filler;
 mod finishes;
 mod geometry;
+mod lands;
 mod materials;
 mod overrides;
 mod patterns;
@@ -67,7 +68,7 @@ impl Faults {
             let name = if name.is_empty() { path } else { name };
             diagnostic::shown(fault, name, text, colour)
         });
-        shown.collect::<Vec<String>>().join("\n")
+        shown.collect::<Vec<String>>().join("\n\n")
     }
 }
 
@@ -197,9 +198,7 @@ fn assembled(file: &Record, collector: &mut Collector) -> Option<Joint> {
     let source = plates::source(&plates[0], collector);
     let sink = plates::sink(&plates[1], collector);
     let contact = contact::read(file, &plates, collector);
-    let groups = fasteners::read(file, &plates, collector);
-    let fasteners: Option<Vec<Fastener>> =
-        groups.map(|groups| groups.into_iter().map(|group| group.fastener).collect());
+    let fasteners = fasteners::read(file, &plates, collector);
     let losses = contact::losses(file, &plates, fasteners.as_deref(), collector);
     let plates: Option<Vec<Plate>> = plates
         .into_iter()

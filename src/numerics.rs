@@ -1,6 +1,7 @@
 //! Mathematics that knows no physics.
 
 pub mod banded;
+pub mod block_grid;
 pub mod block_tridiagonal;
 pub mod interpolation;
 pub mod quadrature;

@@ -2,15 +2,25 @@
 //!
 //! `cells` cuts the plates into one cell per bolt and its rings, once per geometry; `path` solves
 //! the heat through them for one set of forces and conductances; `field` reads the pressure field.
+//! `plan_grid` solves the heat with the plates whole, for several bolts; `calibration` carries its
+//! answer over to many draws of the fast cells.
 
 pub mod annulus;
+mod calibration;
 pub mod cells;
+pub mod column;
 pub mod field;
 pub mod network;
 pub mod path;
+pub mod plan_grid;
 pub mod region;
 mod rings;
 
+#[cfg(test)]
+mod fixtures;
+
+pub use calibration::Calibration;
 pub use cells::{Cells, Plan, Site, cells};
 pub use field::RingRow;
 pub use path::{Load, Path};
+pub use plan_grid::{PlanGrid, plan_grid};

@@ -29,12 +29,15 @@ struct Inputs {
 }
 
 #[derive(Deserialize)]
-#[allow(non_snake_case)]
 struct Heat {
-    R_total: BTreeMap<String, f64>,
-    R_default_power: BTreeMap<String, f64>,
-    R_ref_field: BTreeMap<String, f64>,
-    R_with_gap: BTreeMap<String, f64>,
+    #[serde(rename = "R_total")]
+    total: BTreeMap<String, f64>,
+    #[serde(rename = "R_default_power")]
+    closed_form: BTreeMap<String, f64>,
+    #[serde(rename = "R_ref_field")]
+    listed_field: BTreeMap<String, f64>,
+    #[serde(rename = "R_with_gap")]
+    with_gap: BTreeMap<String, f64>,
 }
 
 #[derive(Deserialize)]
@@ -51,7 +54,8 @@ struct Case {
 }
 
 fn cases() -> Vec<Case> {
-    serde_json::from_str(include_str!("data/axisym_public.json")).unwrap()
+    serde_json::from_str(include_str!("data/axisym_public.json"))
+        .expect("the data file is part of the test")
 }
 
 impl Case {
@@ -188,7 +192,7 @@ fn network_gives_the_listed_resistances_with_the_closed_form_field() {
         let cone = case.closed_form();
         let annulus = case.annulus(cone.contact_radius, 600);
         for (name, heat) in &case.bc {
-            for (biot, listed) in &heat.R_default_power {
+            for (biot, listed) in &heat.closed_form {
                 let bi: f64 = biot.parse().unwrap();
                 let h = |r: f64| bi * cone.pressure(r, case.force()).powf(0.95);
                 let off = annulus.resistance(h, ends(name)) / listed - 1.0;
@@ -217,7 +221,7 @@ fn true_resistance_lies_between_the_bounds_for_the_reference_field() {
         // Twenty stations tell the field well enough for its ring sum; what is left is scaled away.
         assert!((raw / case.Gsum95 - 1.0).abs() < 2e-3, "{}: {raw}", case.id);
         for (name, heat) in &case.bc {
-            for (biot, truth) in &heat.R_total {
+            for (biot, truth) in &heat.total {
                 let bi: f64 = biot.parse().unwrap();
                 let h = |r: f64| bi * field.pressure(r).powf(0.95) * case.Gsum95 / raw;
                 let place = format!("{} {name} {biot}", case.id);
@@ -234,10 +238,10 @@ fn true_resistance_lies_between_the_bounds_for_the_reference_field() {
                         "{place}: {lower} above {truth}"
                     );
                 }
-                let off = upper / heat.R_ref_field[biot] - 1.0;
+                let off = upper / heat.listed_field[biot] - 1.0;
                 assert!(off.abs() < 2e-3, "{place}: network {off:+.5}");
                 let gap = annulus.resistance(|r| h(r) + 0.02 * bi, ends(name));
-                let off = gap / heat.R_with_gap[biot] - 1.0;
+                let off = gap / heat.with_gap[biot] - 1.0;
                 assert!(off.abs() < 2e-3, "{place}: network with gap {off:+.5}");
             }
         }

@@ -14,11 +14,11 @@ const BOND_LINE: f64 = 1.31e-4;
 /// BLT = 1.31e-4 m (τ/P)^0.166
 /// ```
 ///
-/// `stress_ratio` is τ/P, yield stress over pressure. Valid: 0.1–1 MPa; above, the largest filler
+/// `stress_ratio` is τ/P, yield stress over pressure. Valid: 1e5 to 1e6 Pa; above, the largest filler
 /// particle stops it, and [`Filling`] does.
 /// Source: Prasher 2002, scaling constants from memory; that yield stress and conductivity are
 /// what is needed is seen.
-/// Checked: `paste_bond_lines` in tests/validation_conductance.rs.
+/// Checked: `paste_bond_lines` in `tests/validation_conductance.rs`.
 pub fn bond_line(stress_ratio: f64) -> f64 {
     BOND_LINE * stress_ratio.powf(BOND_LINE_EXPONENT)
 }

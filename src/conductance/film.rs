@@ -52,7 +52,7 @@ impl Coated {
 /// None when the layer states no hardness. Valid: silver on nickel; steps by 0.9 % at 4.90.
 /// Source: Antonetti & Yovanovich 1985, J. Heat Transfer 107, 513, rule from memory; its 61 points
 /// scatter by 12.6 % RMS.
-/// Checked: `layer_hardness_is_continuous` in tests/validation_conductance.rs.
+/// Checked: `layer_hardness_is_continuous` in `tests/validation_conductance.rs`.
 pub fn soft_layer_hardness(coated: &Coated) -> Option<f64> {
     let layer = coated.layer.hardness?;
     let ratio = coated.layer.thickness / coated.indentation_depth();
@@ -113,7 +113,7 @@ pub fn resistance(interface: &Interface) -> f64 {
         .iter()
         .filter_map(|face| face.coating)
         .map(|layer| layer.thickness / layer.conductivity)
-        .sum()
+        .fold(0.0, |sum, part| sum + part)
 }
 
 #[cfg(test)]

@@ -34,7 +34,7 @@ impl Crowned {
     ///
     /// Valid: x < 0.65, faces pressed without bolts.
     /// Source: Clausing & Chao 1963, from memory; the constant is Hertz's for ν = 0.30 within 0.4 %.
-    /// Checked: `crowned_faces` in tests/validation_conductance.rs.
+    /// Checked: `crowned_faces` in `tests/validation_conductance.rs`.
     pub fn contact_ratio(&self) -> f64 {
         let [first, second] = self.youngs_moduli;
         let modulus = 2.0 / (first.recip() + second.recip());
@@ -63,7 +63,7 @@ impl Crowned {
 /// ```
 ///
 /// Valid: 0 ≤ x ≤ 0.65. Source: Roess 1950, from memory; within 0.8 % of (1 − x)^1.5 up to 0.3.
-/// Checked: `crowned_faces` in tests/validation_conductance.rs.
+/// Checked: `crowned_faces` in `tests/validation_conductance.rs`.
 pub fn constriction(x: f64) -> f64 {
     let square = x * x;
     let odd =

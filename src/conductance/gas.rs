@@ -28,7 +28,7 @@ pub struct GapGas {
 /// caller compares the temperature with `gas.temperatures`. Accommodation ends at 1. Vacuum is no
 /// gas at all: do not come here with zero pressure.
 ///
-/// Checked: `gas_parameter_of_air` in tests/validation_conductance.rs.
+/// Checked: `gas_parameter_of_air` in `tests/validation_conductance.rs`.
 pub fn at(gas: &Gas, pressure: f64, temperature: f64, factor: f64) -> GapGas {
     let accommodation = (gas.accommodation.value * factor).min(1.0);
     GapGas {
@@ -54,7 +54,7 @@ pub fn at(gas: &Gas, pressure: f64, temperature: f64, factor: f64) -> GapGas {
 ///
 /// Valid: from continuum to free molecules, where `k/M` is the conductance of the gap.
 /// Source: Bahrami et al. 2006, Int. J. Heat Mass Transfer 49, 3691, as quoted by others.
-/// Checked: `gas_parameter_of_air` in tests/validation_conductance.rs.
+/// Checked: `gas_parameter_of_air` in `tests/validation_conductance.rs`.
 pub fn gas_parameter(gas: &Gas, pressure: f64, temperature: f64, accommodation: [f64; 2]) -> f64 {
     let jump: f64 = accommodation.iter().map(|a| (2.0 - a) / a).sum();
     let heat_ratio = tabulated(gas, &gas.heat_ratio, temperature);

@@ -86,7 +86,24 @@ impl Local {
         local
     }
 
-    /// Local conductance, W/(m² K). Below zero and at zero pressure: gap, filler and radiation.
+    /// Local conductance, W/(m² K).
+    ///
+    /// ```text
+    /// h = 1 / (1/(h_s + h_g + h_r) + Σ t/k)        bare or with a fluid
+    /// h = 1 / (R_filler + Σ t/k)                   with a paste, pad, foil or table
+    /// h = measured h(P), log-log between points
+    /// ```
+    ///
+    /// | symbol | quantity | SI unit |
+    /// |---|---|---|
+    /// | `P` | contact pressure, below zero as zero | Pa |
+    /// | `h_s`, `h_g`, `h_r` | spots, gas or fluid, radiation | W/(m² K) |
+    /// | `t/k` | coating of each face | m² K/W |
+    ///
+    /// At zero pressure what crosses without spots.
+    /// Valid, source: as the parts; ranges left are in [`Local::cautions`].
+    /// Checked: `load_never_lowers_the_conductance`, `conductance_is_continuous`,
+    /// `aluminium_pair_under_each_law` in `tests/validation_conductance.rs`.
     #[inline]
     pub fn total(&self, pressure: f64) -> f64 {
         if pressure <= 0.0 {
@@ -111,13 +128,11 @@ impl Local {
     /// [`Local::unloaded`], unless measured values or a pad that loses one face make a step.
     pub fn parted(&self, opening: f64) -> f64 {
         let opening = opening.max(0.0);
-        let parallel = match &self.filling {
-            Some(filling) => filling.parted(opening, |gap| self.across(gap)).recip(),
-            None => {
-                let separation = opening + self.gap_separation(0.0);
-                let gap = self.gap.map_or(0.0, |law| law.conductance(separation));
-                gap + self.radiation
-            }
+        let parallel = if let Some(filling) = &self.filling {
+            filling.parted(opening, |gap| self.across(gap)).recip()
+        } else {
+            let separation = opening + self.gap_separation(0.0);
+            self.gap.map_or(0.0, |law| law.conductance(separation)) + self.radiation
         };
         self.behind_film(parallel).min(self.unloaded)
     }
@@ -233,3 +248,6 @@ fn medium_radiation(interface: &Interface) -> f64 {
     let emissivity = interface.faces.each_ref().map(|face| face.emissivity);
     radiation::conductance(interface.temperature, emissivity)
 }
+
+#[cfg(test)]
+mod tests;

@@ -18,7 +18,7 @@ const STEFAN_BOLTZMANN: f64 = 5.670374419e-8;
 /// Valid: grey, diffuse faces, gap small against its extent, drop small against `T`. A face that
 /// does not emit gives zero.
 /// Source: standard result for parallel plates; Stefan–Boltzmann constant of CODATA 2018.
-/// Checked: `radiation_between_black_faces`, and in tests/validation_conductance.rs.
+/// Checked: `radiation_between_black_faces`, and in `tests/validation_conductance.rs`.
 pub fn conductance(temperature: f64, emissivity: [f64; 2]) -> f64 {
     let [first, second] = emissivity;
     if first <= 0.0 || second <= 0.0 {

@@ -43,7 +43,7 @@ impl Surfaces {
     ///
     /// Valid: independent heights on the two faces.
     /// Source: Mechanical Engineers' Handbook, 3rd ed., vol. 4, pp. 374–375.
-    /// Checked: `faces_combine` in tests/validation_conductance.rs.
+    /// Checked: `faces_combine` in `tests/validation_conductance.rs`.
     pub fn of(faces: &[Face; 2]) -> Self {
         let [first, second] = faces;
         let compliance = |face: &Face| (1.0 - face.poisson * face.poisson) / face.youngs_modulus;
@@ -95,7 +95,7 @@ pub fn slope_from_roughness(roughness: f64) -> f64 {
 /// h(P) = h(P_max) (P / P_max)^½
 /// ```
 ///
-/// `pressure_ratio` is P/P_max, 0 … 1. Published exponents 0.4–0.6; less accurate below 0.4 MPa.
+/// `pressure_ratio` is `P/P_max`, 0 … 1. Published exponents 0.4–0.6; less accurate below 4e5 Pa.
 /// Source: working rule after Mikic 1971, from memory.
 /// Checked: `unloading_stays_above_first_loading`.
 pub fn unloading_factor(pressure_ratio: f64) -> f64 {

@@ -92,6 +92,10 @@ pub struct Case {
 
 /// What fills the space between the faces where nothing else does.
 #[derive(Clone, Debug, PartialEq)]
+#[expect(
+    clippy::large_enum_variant,
+    reason = "a joint has one medium; a box would save nothing"
+)]
 pub enum Medium {
     /// No gas at all.
     Vacuum,
@@ -462,7 +466,7 @@ pub enum MeasuredKind {
         /// The points.
         points: Vec<(f64, f64)>,
     },
-    /// W/K of one bolt: G = conductance · (F/force)^force_exponent · (T/temperature)^temperature_exponent.
+    /// W/K of one bolt: `G = conductance · (F/force)^force_exponent · (T/temperature)^temperature_exponent`.
     ForceLaw {
         /// Conductance at the reference, W/K.
         conductance: f64,

@@ -1,9 +1,9 @@
 //! What the cold forbids: room-temperature data, and the laws of contact below 30 K.
 
 use crate::{
-    catalog::{ColdFault, Grade, Material},
+    catalog::{ColdFault, Material},
     joint::{
-        Case, FillerKind, Joint,
+        Case, Fastener, FillerKind, Joint,
         collector::{Collector, Wording, fault},
         record::Record,
         tree::Span,
@@ -28,9 +28,12 @@ pub(super) fn check(joint: &Joint, file: &Record, collector: &mut Collector) {
             .service
             .cases
             .iter()
-            .find_map(|case| bolt(&fastener.grade, joint, case).err());
+            .find_map(|case| bolt(fastener, joint, case).err());
         if let Some(cold) = cold {
-            collector.report(cold_fault(&cold, &record.span("grade")));
+            collector.report(
+                cold_fault(&cold, &record.span("grade"))
+                    .help("choose a grade whose metal is known in the cold, such as `A2-70`"),
+            );
         }
     }
     if is_bare(joint) {
@@ -82,8 +85,11 @@ fn contraction(material: &Material, joint: &Joint, case: &Case) -> Result<f64, C
     material.contraction_between(joint.service.assembly_temperature, case.temperature)
 }
 
-fn bolt(grade: &Grade, joint: &Joint, case: &Case) -> Result<f64, ColdFault> {
-    grade.conductivity_at(case.temperature)?;
+fn bolt(fastener: &Fastener, joint: &Joint, case: &Case) -> Result<f64, ColdFault> {
+    let grade = &fastener.grade;
+    if fastener.shank_path {
+        grade.conductivity_at(case.temperature)?;
+    }
     grade.contraction_between(joint.service.assembly_temperature, case.temperature)
 }
 

@@ -23,7 +23,7 @@ impl Collector {
         }
     }
 
-    /// Notes a fault unless the condition holds; false for NaN, so NaN is a fault.
+    /// Notes a fault unless the condition holds; a comparison with `NaN` does not hold.
     pub(super) fn require(&mut self, holds: bool, fault: impl FnOnce() -> Fault) {
         if !holds {
             self.report(fault());

@@ -5,103 +5,132 @@ use crate::{
     joint::{
         Engagement, Fastener, MOST_PLACES,
         collector::{Collector, Wording, fault},
-        geometry::depth_at,
+        lands::{self, Land, Site},
         patterns,
         plates::PlateDraft,
         record::Record,
         seats::{self, Bolt, Seats, unknown_plate},
         tightening,
-        tree::{Span, short},
+        tree::short,
         walk::too_many,
     },
     units::{self, Quantity},
 };
-
-/// A fastener group with the place of each of its bolts in the text.
-#[derive(Debug)]
-pub(super) struct Group {
-    /// The group.
-    pub fastener: Fastener,
-    /// Bytes that state each place.
-    pub spans: Vec<Span>,
-}
-
-/// Touching within this is not yet a fault, m.
-const SLACK: f64 = 1e-9;
 
 /// Reads all fastener groups; none when one of them is faulty.
 pub(super) fn read(
     file: &Record,
     plates: &[PlateDraft; 2],
     collector: &mut Collector,
-) -> Option<Vec<Group>> {
+) -> Option<Vec<Fastener>> {
     let records = file.records("fastener");
-    if records.is_empty() && file.has("fastener") && file.span("fastener").is_empty() {
-        return None;
-    }
-    let mut groups = Vec::with_capacity(records.len());
+    let mut fasteners = Vec::with_capacity(records.len());
+    let mut sites = Vec::with_capacity(records.len());
     for record in records {
-        groups.extend(group(record, plates, collector));
+        let (fastener, site) = group(record, plates, collector);
+        fasteners.extend(fastener);
+        sites.extend(site);
     }
-    let bolts: usize = groups.iter().map(|group| group.spans.len()).sum();
+    let bolts: usize = sites.iter().map(|site| site.places.len()).sum();
     if bolts > MOST_PLACES {
         collector.report(too_many("fastener", &file.span("fastener"), bolts));
         return None;
     }
-    for group in &groups {
-        fits(group, plates, collector);
+    for site in &sites {
+        lands::fit(site, plates, collector);
     }
-    apart(&groups, collector);
-    (groups.len() == records.len() && !groups.is_empty()).then_some(groups)
+    lands::apart(&sites, collector);
+    if records.is_empty() && file.has("fastener") && !file.is_faulty("fastener") {
+        collector.report(
+            fault(
+                "fastener/no-place",
+                &file.span("fastener"),
+                "no bolt holds the plates",
+            )
+            .expecting("expected a [[fastener]]"),
+        );
+    }
+    (fasteners.len() == records.len() && !fasteners.is_empty()).then_some(fasteners)
 }
 
-fn group(record: &Record, plates: &[PlateDraft; 2], collector: &mut Collector) -> Option<Group> {
+/// A group, and its site even when other parts of the group are faulty.
+fn group(
+    record: &Record,
+    plates: &[PlateDraft; 2],
+    collector: &mut Collector,
+) -> (Option<Fastener>, Option<Site>) {
     let thread = thread(record, collector);
     let grade = thread.and_then(|thread| grade(record, thread, collector));
     let head_plate = head_plate(record, plates, collector);
     let tightening = tightening::read(record, collector);
     let places = patterns::read(record, plates[0].outline, collector);
-    let thread = thread?;
-    let head_plate = head_plate?;
-    let engagement = engagement(record, thread, &plates[1 - head_plate], collector)?;
-    let bolt = Bolt {
-        record,
-        thread,
-        engagement,
-        head_plate,
-    };
-    let hole_radius = seats::holes(bolt, plates, collector)?;
-    let seats = seats::read(bolt, hole_radius, collector);
-    let Seats {
-        head: head_seat,
-        nut: nut_seat,
-        friction_radius,
-        conical: conical_seat,
-        washer_thickness,
-    } = seats?;
-    let shank_path = match record.flag("shank_path") {
-        None if record.has("shank_path") => return None,
-        flag => flag.unwrap_or(true),
-    };
-    let (places, spans) = places?.into_iter().unzip();
-    Some(Group {
-        fastener: Fastener {
-            thread: thread.clone(),
-            grade: grade?.clone(),
-            head_seat,
-            nut_seat,
-            friction_radius,
-            conical_seat,
-            hole_radius,
-            washer_thickness,
+    let seated = thread.zip(head_plate).and_then(|(thread, head_plate)| {
+        let engagement = engagement(record, thread, &plates[1 - head_plate], collector)?;
+        let bolt = Bolt {
+            record,
+            thread,
             engagement,
-            tightening: tightening?,
             head_plate,
-            shank_path,
-            places,
-        },
-        spans,
-    })
+        };
+        let holes = seats::holes(bolt, plates, collector)?;
+        Some(Seated {
+            engagement,
+            head_plate,
+            holes,
+            seats: seats::read(bolt, holes, collector)?,
+        })
+    });
+    let land = seated.map_or_else(Land::default, Seated::land);
+    let site = places.map(|places| Site { land, places });
+    let shank_path = record
+        .flag("shank_path")
+        .or((!record.has("shank_path")).then_some(true));
+    let fastener = || {
+        let seated = seated?;
+        Some(Fastener {
+            thread: thread?.clone(),
+            grade: grade?.clone(),
+            head_seat: seated.seats.head,
+            nut_seat: seated.seats.nut,
+            friction_radius: seated.seats.friction_radius,
+            conical_seat: seated.seats.conical,
+            hole_radius: seated.holes,
+            washer_thickness: seated.seats.washer_thickness,
+            engagement: seated.engagement,
+            tightening: tightening?,
+            head_plate: seated.head_plate,
+            shank_path: shank_path?,
+            places: site
+                .as_ref()?
+                .places
+                .iter()
+                .map(|(point, _)| *point)
+                .collect(),
+        })
+    };
+    (fastener(), site)
+}
+
+/// How a bolt sits in its plates.
+#[derive(Clone, Copy, Debug)]
+struct Seated {
+    engagement: Engagement,
+    head_plate: usize,
+    holes: [f64; 2],
+    seats: Seats,
+}
+
+impl Seated {
+    fn land(self) -> Land {
+        let mut seats = [0.0; 2];
+        seats[self.head_plate] = self.seats.head.outer_radius;
+        seats[1 - self.head_plate] = self.seats.nut.map_or(0.0, |nut| nut.outer_radius);
+        Land {
+            holes: self.holes,
+            seats,
+            head_plate: self.head_plate,
+        }
+    }
 }
 
 fn thread(record: &Record, collector: &mut Collector) -> Option<&'static Thread> {
@@ -201,147 +230,4 @@ fn engagement(
     } else {
         Engagement::Tapped { length }
     })
-}
-
-/// Every hole and every seat must lie on its plate.
-fn fits(group: &Group, plates: &[PlateDraft; 2], collector: &mut Collector) {
-    let fastener = &group.fastener;
-    for (point, span) in fastener.places.iter().zip(&group.spans) {
-        for (index, plate) in plates.iter().enumerate() {
-            let Some((outline, origin)) = plate.placed() else {
-                continue;
-            };
-            if collector.is_full() {
-                return;
-            }
-            let depth = depth_at(outline, origin, *point);
-            let hole = fastener.hole_radius[index];
-            if depth + SLACK < hole {
-                collector.report(hole_outside(point, span, plate));
-                continue;
-            }
-            let (seat, part) = if index == fastener.head_plate {
-                (Some(fastener.head_seat), "head")
-            } else {
-                (fastener.nut_seat, "nut")
-            };
-            if let Some(seat) = seat
-                && depth + SLACK < seat.outer_radius
-            {
-                collector.report(
-                    fault(
-                        "plate/head-beyond-edge",
-                        span,
-                        format!(
-                            "the {part} at {} reaches beyond the edge of plate `{}`",
-                            shown(point),
-                            plate.name
-                        ),
-                    )
-                    .expecting(format!(
-                        "expected at least {} from the edge",
-                        units::show(seat.outer_radius, Quantity::Length)
-                    )),
-                );
-            }
-        }
-    }
-}
-
-fn hole_outside(point: &[f64; 2], span: &Span, plate: &PlateDraft) -> crate::diagnostic::Fault {
-    fault(
-        "plate/hole-outside",
-        span,
-        format!(
-            "the hole at {} does not lie inside plate `{}`",
-            shown(point),
-            plate.name
-        ),
-    )
-    .expecting(format!("expected on plate `{}`", plate.name))
-    .help("`at` is measured from the lower left corner of the first plate (round: its centre)")
-}
-
-/// No two holes or heads may share the same land.
-fn apart(groups: &[Group], collector: &mut Collector) {
-    let mut bolts: Vec<(&Fastener, [f64; 2], &Span)> = groups
-        .iter()
-        .flat_map(|group| {
-            let fastener = &group.fastener;
-            fastener
-                .places
-                .iter()
-                .zip(&group.spans)
-                .map(move |(point, span)| (fastener, *point, span))
-        })
-        .collect();
-    bolts.sort_by(|one, other| one.1[0].total_cmp(&other.1[0]));
-    let widest = bolts
-        .iter()
-        .map(|(fastener, ..)| 2.0 * reach(fastener))
-        .fold(0.0, f64::max);
-    for (index, (fastener, point, span)) in bolts.iter().enumerate() {
-        for (other, place, other_span) in &bolts[index + 1..] {
-            if place[0] - point[0] > widest || collector.is_full() {
-                break;
-            }
-            let distance = (place[0] - point[0]).hypot(place[1] - point[1]);
-            let later = if other_span.start >= span.start {
-                other_span
-            } else {
-                span
-            };
-            let pairs = [0, 1].map(|plate| fastener.hole_radius[plate] + other.hole_radius[plate]);
-            let (code, what) = if distance + SLACK < pairs[0].max(pairs[1]) {
-                ("plate/holes-overlap", "holes")
-            } else if distance + SLACK < seats_reach(fastener, other) {
-                ("plate/heads-overlap", "heads or nuts")
-            } else {
-                continue;
-            };
-            collector.report(
-                fault(
-                    code,
-                    later,
-                    format!(
-                        "the {what} at {} and {} overlap",
-                        shown(point),
-                        shown(place)
-                    ),
-                )
-                .expecting(format!(
-                    "{} from its neighbour",
-                    units::show(distance, Quantity::Length)
-                )),
-            );
-        }
-    }
-}
-
-/// The distance below which a seat of one bolt meets a seat of the other on the same face, m.
-fn seats_reach(one: &Fastener, other: &Fastener) -> f64 {
-    (0..2)
-        .filter_map(|plate| Some(seat_on(one, plate)? + seat_on(other, plate)?))
-        .fold(0.0, f64::max)
-}
-
-fn seat_on(fastener: &Fastener, plate: usize) -> Option<f64> {
-    if plate == fastener.head_plate {
-        Some(fastener.head_seat.outer_radius)
-    } else {
-        fastener.nut_seat.map(|seat| seat.outer_radius)
-    }
-}
-
-fn reach(fastener: &Fastener) -> f64 {
-    let nut = fastener.nut_seat.map_or(0.0, |seat| seat.outer_radius);
-    fastener.head_seat.outer_radius.max(nut)
-}
-
-fn shown(point: &[f64; 2]) -> String {
-    format!(
-        "({}, {})",
-        units::show(point[0], Quantity::Length),
-        units::show(point[1], Quantity::Length)
-    )
 }

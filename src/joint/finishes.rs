@@ -43,19 +43,18 @@ pub(super) fn read(plate: &Record, collector: &mut Collector) -> Option<Finish> 
     let roughness = roughness(record, collector);
     let coating = coating(record, collector);
     let roughness = roughness?;
-    let (slope, slope_factor) = match record.number("slope") {
-        Some(slope) => (slope, 1.0),
-        None => {
-            let slope = slope_from_roughness(roughness.nominal);
-            if !record.has("slope") {
-                collector.assume(
-                    record.at("slope"),
-                    format!("{slope:.3}"),
-                    "from the roughness: 0.125 (Rq / 1 µm)^0.402, off by a factor 1.4 either way",
-                );
-            }
-            (slope, SLOPE_FACTOR)
+    let (slope, slope_factor) = if let Some(slope) = record.number("slope") {
+        (slope, 1.0)
+    } else {
+        let slope = slope_from_roughness(roughness.nominal);
+        if !record.has("slope") {
+            collector.assume(
+                record.at("slope"),
+                format!("{slope:.3}"),
+                "from the roughness: 0.125 (Rq / 1 µm)^0.402, off by a factor 1.4 either way",
+            );
         }
+        (slope, SLOPE_FACTOR)
     };
     (collector.count() == before).then_some(Finish {
         roughness,
@@ -168,19 +167,18 @@ fn coating(record: &Record, collector: &mut Collector) -> Option<Coating> {
         );
         return None;
     };
-    let thickness = match plating_record.number("thickness") {
-        Some(thickness) => thickness,
-        None => {
-            let typical = plating.typical_thickness.value;
-            if !plating_record.has("thickness") {
-                collector.assume(
-                    plating_record.at("thickness"),
-                    units::show(typical, Quantity::Length),
-                    format!("typical of `{}`", plating.name),
-                );
-            }
-            typical
+    let thickness = if let Some(thickness) = plating_record.number("thickness") {
+        thickness
+    } else {
+        let typical = plating.typical_thickness.value;
+        if !plating_record.has("thickness") {
+            collector.assume(
+                plating_record.at("thickness"),
+                units::show(typical, Quantity::Length),
+                format!("typical of `{}`", plating.name),
+            );
         }
+        typical
     };
     Some(Coating {
         plating: plating.clone(),

@@ -48,6 +48,27 @@ pub(super) fn apply(tree: &mut Node, text: &str, shift: usize, collector: &mut C
 const CODE: &str = "set/bad-override";
 const EXAMPLE: &str = "for example `--set plate.upper.thickness=\"6 mm\"`";
 
+/// Keys of one table of which only one group may stand.
+const EXCLUSIVE: [&[&[&str]]; 9] = [
+    &[&["torque"], &["preload"]],
+    &[&["method"], &["scatter"]],
+    &[&["at"], &["pattern"]],
+    &[&["size"], &["diameter"]],
+    &[&["film"], &["face"], &["edge"]],
+    &[&["class"], &["thread", "head"], &["nut_factor"]],
+    &[&["rise"], &["resistance"], &["conductance"]],
+    &[&["sink"], &["hot", "cold"]],
+    &[&["points"], &["law"]],
+];
+
+/// Whether stating one key excludes another of the same table.
+fn excludes(key: &str, other: &str) -> bool {
+    EXCLUSIVE.iter().any(|groups| {
+        let group_of = |name: &str| groups.iter().position(|group| group.contains(&name));
+        matches!((group_of(key), group_of(other)), (Some(one), Some(two)) if one != two)
+    })
+}
+
 /// A step of a path.
 #[derive(Debug)]
 struct Step {
@@ -200,6 +221,10 @@ fn child<'n>(node: &'n mut Node, step: &Step) -> Result<&'n mut Node, Box<Fault>
         let told = bad(step, "this is not a table in the file").expecting("expected a table");
         return Err(Box::new(told));
     };
+    // A new key takes the place of what it excludes: a torque that of a preload.
+    if !entries.iter().any(|(key, _)| key.name == step.name) {
+        entries.retain(|(key, _)| !excludes(&step.name, &key.name));
+    }
     let place = entries
         .iter()
         .position(|(key, _)| key.name == step.name)

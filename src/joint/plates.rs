@@ -68,7 +68,7 @@ pub(super) fn read(
     collector: &mut Collector,
 ) -> Option<[PlateDraft; COUNT]> {
     let records = file.records("plate");
-    if !file.has("plate") || (records.is_empty() && !file.span("plate").is_empty()) {
+    if !file.has("plate") || file.is_faulty("plate") {
         return None;
     }
     if let Some(third) = records.get(COUNT) {
@@ -83,13 +83,18 @@ pub(super) fn read(
         );
     }
     let [first, second, ..] = records else {
-        if let [only] = records {
-            collector.report(
-                fault("plate/count", &only.place, "the file has one plate")
-                    .expecting("expected a second [[plate]]")
-                    .help("a joint has two plates, the warm one first"),
-            );
-        }
+        let place = records
+            .first()
+            .map_or_else(|| file.span("plate"), |only| only.place.clone());
+        collector.report(
+            fault(
+                "plate/count",
+                &place,
+                format!("a joint has two plates; the file has {}", records.len()),
+            )
+            .expecting("expected two [[plate]] tables")
+            .help("the warm plate comes first"),
+        );
         return None;
     };
     let mut upper = draft(first, "upper", own, collector);
@@ -101,16 +106,20 @@ pub(super) fn read(
     misplaced(second, &["heated"], "first", collector);
     upper.origin = Some([0.0, 0.0]);
     lower.origin = origin_of_second(&upper, &lower, collector);
-    if let (Some(above), Some(below)) = (upper.placed(), lower.placed()) {
-        collector.require(overlap(above, below), || {
+    if let (Some(above), Some(below)) = (upper.placed(), lower.placed())
+        && !overlap(above, below)
+    {
+        collector.report(
             fault(
                 "plate/no-overlap",
                 &second.span("offset"),
                 "the plates do not lie on each other",
             )
             .expecting("expected a place on this plate")
-            .help("`offset` is where the corner (round: the centre) of the first plate lies on the second")
-        });
+            .help("`offset` is where the corner (round: the centre) of the first plate lies on the second"),
+        );
+        // Without a place for it, no hole is told to lie beside this plate.
+        lower.origin = None;
     }
     Some([upper, lower])
 }

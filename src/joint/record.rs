@@ -98,6 +98,11 @@ impl Record {
         self.entry(key).is_some()
     }
 
+    /// Whether the field is stated wrongly, which has then been told.
+    pub(super) fn is_faulty(&self, key: &str) -> bool {
+        self.entry(key).is_some_and(|entry| entry.value.is_none())
+    }
+
     /// Path of a field: `plate.upper.thickness`.
     pub(super) fn at(&self, key: &str) -> String {
         if self.path.is_empty() {

@@ -115,7 +115,7 @@ fn kind(kind: Kind, field: &Field) -> Value {
 }
 
 fn any<const N: usize>(of: [Value; N]) -> Value {
-    json!({ "anyOf": of.to_vec() })
+    json!({ "anyOf": Vec::from(of) })
 }
 
 fn list(item: &Value, [least, most]: [usize; 2]) -> Value {

@@ -234,7 +234,7 @@ fn head(bolt: Bolt<'_>, collector: &mut Collector) -> Option<&'static SeatRecord
         return None;
     };
     let known = catalog::seats().iter().any(|seat| {
-        HEADS.contains(&seat.kind.as_str()) && catalog::seat(name, &seat.thread).is_some()
+        catalog::seat(name, &seat.thread).is_some_and(|found| HEADS.contains(&found.kind.as_str()))
     });
     if !known {
         collector.report(

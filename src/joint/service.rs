@@ -69,14 +69,13 @@ fn medium(record: &Record, collector: &mut Collector) -> Option<Medium> {
         );
         return None;
     };
-    let pressure = match record.number("pressure") {
-        Some(pressure) => pressure,
-        None => {
-            if !record.has("pressure") {
-                collector.assume(record.at("pressure"), "101 325 Pa", "not stated");
-            }
-            ATMOSPHERE
+    let pressure = if let Some(pressure) = record.number("pressure") {
+        pressure
+    } else {
+        if !record.has("pressure") {
+            collector.assume(record.at("pressure"), "101 325 Pa", "not stated");
         }
+        ATMOSPHERE
     };
     Some(Medium::Gas {
         gas: gas.clone(),

@@ -5,7 +5,7 @@ mod scalars;
 use std::ops::RangeInclusive;
 
 use crate::{
-    diagnostic::Fault,
+    diagnostic::{self, Fault},
     joint::{
         MOST_PLACES,
         collector::{Collector, Wording, fault},
@@ -18,7 +18,7 @@ use crate::{
 /// Reads the whole file.
 pub(super) fn file(node: &Node, section: &'static Section, collector: &mut Collector) -> Record {
     Walk { collector }
-        .record(node, section, String::new())
+        .record(node, section, "")
         .unwrap_or_else(|| Record::absent("", &node.span))
 }
 
@@ -36,14 +36,26 @@ struct Stated<'n> {
 }
 
 impl Walk<'_> {
-    fn record(&mut self, node: &Node, section: &'static Section, path: String) -> Option<Record> {
+    fn record(&mut self, node: &Node, section: &'static Section, path: &str) -> Option<Record> {
         let Form::Table(entries) = &node.form else {
             return self.short_record(node, section, path);
         };
-        let mut record = Record::absent(&path, &node.span);
+        let mut record = Record::absent(path, &node.span);
         for (key, value) in entries {
             let Some(field) = section.field(&key.name) else {
-                self.unknown(key, section);
+                let meant = self
+                    .unknown(key, section)
+                    .and_then(|near| section.field(&near));
+                // The key that was meant counts as stated, so that one slip is told once.
+                if let Some(field) = meant
+                    && node.child(field.key).is_none()
+                {
+                    record.entries.push(Entry {
+                        field,
+                        span: key.span.clone(),
+                        value: None,
+                    });
+                }
                 continue;
             };
             let path = record.at(field.key);
@@ -72,7 +84,7 @@ impl Walk<'_> {
         &mut self,
         node: &Node,
         section: &'static Section,
-        path: String,
+        path: &str,
     ) -> Option<Record> {
         let field = section.shorthand.and_then(|key| section.field(key));
         let Some(field) = field else {
@@ -83,12 +95,8 @@ impl Walk<'_> {
             );
             return None;
         };
-        let mut record = Record::absent(&path, &node.span);
-        let value = self.value(Stated {
-            field,
-            node,
-            path: &path,
-        })?;
+        let mut record = Record::absent(path, &node.span);
+        let value = self.value(Stated { field, node, path })?;
         record.entries.push(Entry {
             field,
             span: node.span.clone(),
@@ -132,7 +140,7 @@ impl Walk<'_> {
             }
             Kind::Count => self.counts(stated).map(Value::Count),
             Kind::Table(section) => self
-                .record(stated.node, section, stated.path.to_owned())
+                .record(stated.node, section, stated.path)
                 .map(Value::Record),
             Kind::List(section) => self.records(stated, section).map(Value::Records),
         }
@@ -161,7 +169,7 @@ impl Walk<'_> {
                 None => format!("{}[{}]", section.name, index + 1),
             };
             if matches!(node.form, Form::Table(_)) {
-                records.extend(self.record(node, section, path));
+                records.extend(self.record(node, section, &path));
             } else {
                 self.collector
                     .report(wrong_type(node, &format!("`{}`", section.name), "a table"));
@@ -187,12 +195,11 @@ impl Walk<'_> {
 
     fn point(&mut self, stated: Stated<'_>) -> Option<Point> {
         let length = Measure::Quantity(crate::units::Quantity::Length);
-        match &stated.node.form {
-            Form::List(nodes) => self.two(stated, nodes, [length; 2]),
-            _ => {
-                self.wrong(stated);
-                None
-            }
+        if let Form::List(nodes) = &stated.node.form {
+            self.two(stated, nodes, [length; 2])
+        } else {
+            self.wrong(stated);
+            None
         }
     }
 
@@ -274,24 +281,22 @@ impl Walk<'_> {
         count <= MOST_PLACES
     }
 
-    fn unknown(&mut self, key: &Key, section: &Section) {
-        let elsewhere = home(&key.name, section);
-        let known = fault(
+    /// Tells of an unknown key; returns the key of this table that was probably meant.
+    fn unknown(&mut self, key: &Key, section: &Section) -> Option<String> {
+        let told = fault(
             "file/unknown-key",
             &key.span,
             format!("unknown key `{}`", short(&key.name)),
         )
         .expecting("not a key of this table");
-        let told = known.nearest(&key.name, section.keys());
-        let told = match (&told.help, elsewhere) {
-            (None, Some(place)) => told.help(format!("`{}` belongs in {place}", key.name)),
-            (None, None) => told.help(format!(
-                "it takes {}",
-                listed(&section.keys().collect::<Vec<_>>())
-            )),
-            (Some(_), _) => told,
+        let near = diagnostic::nearest(&key.name, section.keys());
+        let help = match (home(&key.name, section), &near) {
+            (Some(place), _) => format!("`{}` belongs in {place}", key.name),
+            (None, Some(near)) => format!("did you mean `{near}`?"),
+            (None, None) => format!("it takes {}", listed(&section.keys().collect::<Vec<_>>())),
         };
-        self.collector.report(told);
+        self.collector.report(told.help(help));
+        near
     }
 
     fn wrong(&mut self, stated: Stated<'_>) {
@@ -364,4 +369,97 @@ fn range(field: &Field) -> RangeInclusive<f64> {
 
 fn spread_key(key: &str) -> Option<usize> {
     SPREAD_KEYS.iter().position(|known| *known == key)
+}
+
+#[cfg(test)]
+mod tests {
+    use std::collections::BTreeSet;
+
+    use toml::de::DeTable;
+
+    use super::*;
+    use crate::joint::sections::FILE;
+
+    /// Every section of the description, each once.
+    fn sections(section: &'static Section, found: &mut Vec<&'static Section>) {
+        if found.iter().any(|known| std::ptr::eq(*known, section)) {
+            return;
+        }
+        found.push(section);
+        for field in section.fields {
+            if let Kind::Table(inner) | Kind::List(inner) = field.kind {
+                sections(inner, found);
+            }
+        }
+    }
+
+    fn all() -> Vec<&'static Section> {
+        let mut found = Vec::new();
+        sections(&FILE, &mut found);
+        found
+    }
+
+    #[test]
+    fn every_example_of_the_description_reads() {
+        for section in all() {
+            for field in section.fields {
+                let text = field.line();
+                let table = DeTable::parse(&text).expect("an example is TOML");
+                let mut collector = Collector::default();
+                file(&Node::file(&table), section, &mut collector);
+                let told: Vec<_> = collector
+                    .into_parts()
+                    .0
+                    .into_iter()
+                    .filter(|fault| {
+                        // The example states one field; what else the table needs is not its matter.
+                        fault.code != "file/missing-key" || fault.span.start > 0
+                    })
+                    .collect();
+                assert!(told.is_empty(), "{text}: {told:?}");
+            }
+        }
+    }
+
+    #[test]
+    fn keys_of_a_section_are_unique_and_described() {
+        for section in all() {
+            let keys: BTreeSet<_> = section.keys().collect();
+            assert_eq!(keys.len(), section.fields.len(), "{}", section.name);
+            for field in section.fields {
+                assert!(
+                    !field.meaning.is_empty() && !field.example.is_empty(),
+                    "{}",
+                    field.key
+                );
+                assert!(field.range[0] < field.range[1], "{}", field.key);
+            }
+            let short = section.shorthand;
+            assert!(
+                short.is_none_or(|key| section.field(key).is_some()),
+                "{}",
+                section.name
+            );
+        }
+    }
+
+    #[test]
+    fn quantities_have_a_finite_range() {
+        for field in all().iter().flat_map(|section| section.fields) {
+            if matches!(
+                field.kind,
+                Kind::Quantity(_)
+                    | Kind::QuantityOr(..)
+                    | Kind::Spread(_)
+                    | Kind::Point
+                    | Kind::Points
+            ) {
+                assert!(
+                    field.range.iter().all(|limit| limit.is_finite()),
+                    "{}",
+                    field.key
+                );
+            }
+        }
+    }
 }

@@ -163,7 +163,6 @@ fn dot(a: &[f64], b: &[f64]) -> f64 {
 }
 
 #[cfg(test)]
-#[expect(clippy::float_cmp, reason = "these results are exact")]
 mod tests {
     use super::*;
 

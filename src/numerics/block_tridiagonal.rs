@@ -71,11 +71,11 @@ impl Ladder {
 
 /// Inverse of a positive definite block; none when a pivot has vanished against its origin.
 fn inverse([a, b, d]: [f64; 3], origin: [f64; 3]) -> Option<[f64; 3]> {
-    if !(a > SMALLEST_PIVOT * origin[0]) {
+    if a.is_nan() || a <= SMALLEST_PIVOT * origin[0] {
         return None;
     }
     let pivot = d - b * b / a;
-    if !(pivot > SMALLEST_PIVOT * origin[2]) {
+    if pivot.is_nan() || pivot <= SMALLEST_PIVOT * origin[2] {
         return None;
     }
     let determinant = a * pivot;

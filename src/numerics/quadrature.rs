@@ -189,7 +189,8 @@ mod tests {
 
     #[test]
     fn error_bounds_the_truth() {
-        let cases: [(fn(f64) -> f64, &[f64], f64); 5] = [
+        type Case<'a> = (fn(f64) -> f64, &'a [f64], f64);
+        let cases: [Case; 5] = [
             (|x| x.exp(), &[0.0, 1.0], 1f64.exp() - 1.0),
             (f64::sqrt, &[0.0, 1.0], 2.0 / 3.0),
             (|x| (x - 0.3).abs(), &[0.0, 0.3, 1.0], 0.29),

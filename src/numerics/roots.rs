@@ -89,7 +89,6 @@ fn interpolated(best: Point, previous: Point, opposite: Point) -> f64 {
 }
 
 #[cfg(test)]
-#[expect(clippy::float_cmp, reason = "these results are exact")]
 mod tests {
     use std::cell::Cell;
 

@@ -10,6 +10,9 @@ const BITS: usize = 32;
 /// Levels of the scrambling tree that one hash decides: 2⁶ − 1 nodes, one bit each.
 const LEVELS: u32 = 6;
 
+/// Hashes that decide all levels, one below the other.
+const TREES: u32 = 6;
+
 /// A Sobol sequence with Owen scrambling.
 ///
 /// Every coordinate of every point is uniform on (0, 1), and the points of any block of 2ᵏ fill
@@ -135,25 +138,23 @@ fn digits(columns: &[u32; BITS], gray: u32) -> u32 {
 
 /// Flips every digit by a random bit that depends on all digits before it.
 fn scrambled(digits: u32, seed: u64) -> f64 {
-    let mut flipped = 0u32;
-    for level in (0..BITS as u32).step_by(LEVELS as usize) {
-        let prefix = if level == 0 {
-            0
-        } else {
-            digits >> (32 - level)
-        };
-        let tree = mixed(seed ^ (u64::from(level) << 32 | u64::from(prefix)));
-        let mut node = 1u32;
-        for depth in level..(level + LEVELS).min(BITS as u32) {
-            let digit = digits >> (31 - depth) & 1;
-            let flip = (tree >> node & 1) as u32;
-            flipped |= (digit ^ flip) << (31 - depth);
-            node = 2 * node + digit;
+    // Six trees of six levels hold 36 digits: four random ones follow those of the sequence.
+    let digits = u64::from(digits) << 4;
+    let mut flips = 0;
+    for step in 0..TREES {
+        let below = LEVELS * (TREES - 1 - step);
+        let prefix = digits >> (below + LEVELS);
+        let tree = mixed(seed ^ prefix ^ u64::from(step) << 40);
+        let group = digits >> below & 0b11_1111;
+        // The node of a level: its row, then the digits above it.
+        for level in 0..LEVELS {
+            let node = 1 << level | group >> (LEVELS - level);
+            flips |= (tree >> node & 1) << (below + LEVELS - 1 - level);
         }
     }
-    let below = unit(mixed(!seed ^ u64::from(digits)));
+    let below = unit(mixed(!seed ^ digits));
     // Rounding may carry the sum to one when every digit is set.
-    ((f64::from(flipped) + below) * 2f64.powi(-32)).min(1.0 - f64::EPSILON / 2.0)
+    (((digits ^ flips) as f64 + below) * 2f64.powi(-36)).min(1.0 - f64::EPSILON / 2.0)
 }
 
 /// A well mixed 64-bit number: the finaliser of Steele, Lea & Flood 2014 (`SplitMix`).
@@ -170,6 +171,7 @@ fn unit(number: u64) -> f64 {
 }
 
 #[cfg(test)]
+#[expect(clippy::float_cmp, reason = "these results are exact")]
 mod tests {
     use super::*;
 

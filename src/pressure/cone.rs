@@ -79,7 +79,7 @@ impl Pair {
     /// t_e = t_min [1 + 1.5/(1 + 1.75 κ) (1 − t_min/t_max)],   κ = E′_thick/E′_thin
     /// ```
     ///
-    /// Valid: t_max/t_min ≤ 6, 1/3 ≤ κ ≤ 3.
+    /// Valid: thicknesses up to 1 : 6, 1/3 ≤ κ ≤ 3.
     /// Source: fitted to this project's finite-element solutions of the unilateral contact of two
     /// annular plates.
     pub fn effective_thickness(&self) -> f64 {
@@ -194,7 +194,7 @@ impl Pair {
 /// The field of one bolt between two plates.
 ///
 /// Accuracy of the fitted law over 43 reference solutions: contact radius within 4 %, ring sum of
-/// p^0.95 within 0.6 %. The fitted shape depends on a, b and t_e alone, so it can stand on any
+/// p^0.95 within 0.6 %. The fitted shape depends on radii of hole and head and on `t_e` alone, so it can stand on any
 /// contact radius; it was checked on the fitted one.
 /// Checked: `closed_form_stays_near_the_reference_solutions`, `field_carries_the_force`.
 pub fn cone(pair: &Pair, rule: ConeRule, shape: ConeShape) -> Cone {

@@ -2,7 +2,10 @@
 
 use std::f64::consts::PI;
 
-use crate::resistance::network::{Inlet, Outlet, Plates, Rings, shapes};
+use crate::resistance::{
+    column::{Columns, Inlet, Outlet, Plates},
+    network::{Rings, shapes},
+};
 
 /// Two equal annular plates about one bolt.
 #[derive(Clone, Debug, PartialEq)]
@@ -36,12 +39,14 @@ impl Annulus {
             .collect();
         let (shape, rim_shape) = shapes(self.edges[0], &self.edges, &area);
         Rings {
-            plate_area: [area.clone(), area.clone()],
-            source_area: area.clone(),
+            columns: Columns {
+                plate_area: [area.clone(), area.clone()],
+                source_area: area.clone(),
+                first_patch: (0..=area.len()).collect(),
+                patch_area: area,
+            },
             shape: [shape.clone(), shape],
-            rim_shape: [rim_shape; 2],
-            first_patch: (0..=area.len()).collect(),
-            patch_area: area,
+            rim_shape: [rim_shape.clone(), rim_shape],
         }
     }
 
@@ -55,7 +60,7 @@ impl Annulus {
             .windows(2)
             .map(|pair| conductance(0.5 * (pair[0] + pair[1])))
             .collect();
-        let face: f64 = rings.patch_area.iter().sum();
+        let face: f64 = rings.columns.patch_area.iter().sum();
         let (inlet, outlet) = match ends {
             Ends::Isothermal => (Inlet::Temperature, Outlet::Film(f64::INFINITY)),
             Ends::Flux => (Inlet::Flux(face.recip()), Outlet::Flux(face.recip())),

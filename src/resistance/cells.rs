@@ -45,7 +45,8 @@ pub const DEFAULT_RINGS: usize = 100;
 #[derive(Clone, Debug, PartialEq)]
 pub struct Cells {
     pub(super) plan: Plan,
-    pub(super) cells: Vec<Cell>,
+    /// One for each bolt.
+    pub(super) fine: Vec<Cell>,
     /// The same joint with half the rings, for the ring error.
     pub(super) coarse: Vec<Cell>,
     /// Area of each plate without holes, m².
@@ -259,7 +260,7 @@ pub fn cells(plan: &Plan) -> Cells {
             .map(|bolt| plan.overlapping(bolt))
             .collect(),
         restored: carried.iter().map(|share| share.recip()).collect(),
-        cells: fine,
+        fine,
         coarse,
         plan: plan.clone(),
     }

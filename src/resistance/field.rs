@@ -62,10 +62,10 @@ impl Cells {
 
     /// Area under pressure, m².
     pub fn contact_area(&self) -> f64 {
-        self.cells
+        self.fine
             .iter()
             .flat_map(|cell| {
-                let areas = &cell.rings.patch_area;
+                let areas = &cell.rings.columns.patch_area;
                 (0..areas.len())
                     .filter(|patch| !cell.patches.of(*patch).is_empty())
                     .map(|patch| areas[patch])
@@ -75,7 +75,7 @@ impl Cells {
 
     /// Force carried by all patches, N.
     pub fn force_carried(&self, forces: &[f64]) -> f64 {
-        self.cells
+        self.fine
             .iter()
             .flat_map(|cell| (0..cell.edges.len() - 1).map(|ring| cell.ring_force(ring, forces)))
             .sum()
@@ -84,7 +84,7 @@ impl Cells {
     /// Distance from the nearest bolt axis that holds a share of the whole force, m.
     pub fn radius_holding(&self, share: f64, forces: &[f64]) -> f64 {
         let rings: Vec<(f64, f64, f64)> = self
-            .cells
+            .fine
             .iter()
             .flat_map(|cell| {
                 cell.edges
@@ -119,19 +119,20 @@ impl Cells {
 
     /// The rings around one bolt that lie on the faying faces, from the hole outward.
     pub fn rings<H: Fn(f64) -> f64>(&self, load: &Load<H>, bolt: usize) -> Vec<RingRow> {
-        let cell = &self.cells[bolt];
+        let cell = &self.fine[bolt];
         let mut cumulative = 0.0;
         let mut rows = Vec::new();
         for (ring, pair) in cell.edges.windows(2).enumerate() {
-            let patches = cell.rings.first_patch[ring]..cell.rings.first_patch[ring + 1];
-            let area: f64 = cell.rings.patch_area[patches.clone()].iter().sum();
+            let patches =
+                cell.rings.columns.first_patch[ring]..cell.rings.columns.first_patch[ring + 1];
+            let area: f64 = cell.rings.columns.patch_area[patches.clone()].iter().sum();
             if area <= 0.0 {
                 continue;
             }
             let share: f64 = patches
                 .map(|patch| {
-                    let pressure = cell.pressure(patch, load.forces);
-                    cell.rings.patch_area[patch] * (load.conductance)(pressure)
+                    let pressure = cell.patches.pressure(patch, load.forces);
+                    cell.rings.columns.patch_area[patch] * (load.conductance)(pressure)
                 })
                 .sum();
             cumulative += share;
@@ -163,8 +164,10 @@ impl Cells {
 impl Cell {
     /// Force on one ring, N.
     fn ring_force(&self, ring: usize, forces: &[f64]) -> f64 {
-        (self.rings.first_patch[ring]..self.rings.first_patch[ring + 1])
-            .map(|patch| self.rings.patch_area[patch] * self.pressure(patch, forces))
+        (self.rings.columns.first_patch[ring]..self.rings.columns.first_patch[ring + 1])
+            .map(|patch| {
+                self.rings.columns.patch_area[patch] * self.patches.pressure(patch, forces)
+            })
             .sum()
     }
 }

@@ -4,219 +4,31 @@
 //! flux linear through each plate. By the complementary energy principle the resistance of a
 //! round pair of equal discs is an upper bound for the conductance used, up to the rings.
 
-use crate::numerics::block_tridiagonal::Ladder;
+use crate::{
+    numerics::block_tridiagonal::Ladder,
+    resistance::column::{Columns, Coupling, Flow, Inlet, Outlet, Plates},
+};
 
 /// Rings of both plates around one bolt, as areas and shape factors; lengths in m.
 #[derive(Clone, Debug, Default, PartialEq)]
 pub struct Rings {
-    /// Area of each ring of each plate, m².
-    pub plate_area: [Vec<f64>; 2],
-    /// Heated area of each ring, m².
-    pub source_area: Vec<f64>,
-    /// 2π/ln(r_{j+1}/r_j) between ring centres on the equal-area circle; 0 where a ring is empty.
+    /// Areas of the rings.
+    pub columns: Columns,
+    /// Between ring centres, conductance over conductivity and thickness; 0 beside an empty ring.
     pub shape: [Vec<f64>; 2],
-    /// 2π/ln(R/r) from the last ring centre of each plate to its rim; 0 where it has none.
-    pub rim_shape: [f64; 2],
-    /// First patch of each ring, and one past the last patch at the end.
-    pub first_patch: Vec<usize>,
-    /// Area of each patch of the faying faces, m².
-    pub patch_area: Vec<f64>,
-}
-
-/// How heat enters the first plate.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub enum Inlet {
-    /// Uniform flux on the heated area, W/m².
-    Flux(f64),
-    /// The heated area one kelvin above the coolant.
-    Temperature,
-    /// The rim of the first plate one kelvin above the coolant.
-    Rim,
-}
-
-/// How heat leaves the second plate.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub enum Outlet {
-    /// A film on the whole back, W/(m² K); infinite for an isothermal back.
-    Film(f64),
-    /// Uniform flux on the whole back, W/m².
-    Flux(f64),
-    /// The rim of the second plate at the coolant's temperature.
-    Rim,
-}
-
-/// What the rings are made of.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Plates {
-    /// Thickness, m.
-    pub thickness: [f64; 2],
-    /// Conductivity, W/(m K).
-    pub conductivity: [f64; 2],
-    /// How heat enters.
-    pub inlet: Inlet,
-    /// How heat leaves.
-    pub outlet: Outlet,
-}
-
-/// Temperatures above the coolant and heat through one ring network.
-#[derive(Clone, Copy, Debug, Default, PartialEq)]
-pub struct Flow {
-    /// Heat through the network, W.
-    pub heat: f64,
-    /// Temperature of the heated area times that area, K m².
-    pub source: f64,
-    /// Highest temperature of the outer face of the first plate, K.
-    pub hottest: f64,
-    /// Mean temperature times area of each plate, K m².
-    pub plate: [f64; 2],
-    /// Drop across the interface times the area of the faying faces, K m².
-    pub interface: f64,
-    /// Temperature of the outer face of the second plate times its area, K m².
-    pub back: f64,
-}
-
-/// One column of a ring with axial flux linear through each plate, all per area.
-///
-/// ```text
-/// q_i (1/h + z1/3 + z2/3) + q_t z1/6 + q_b z2/6 = T1 − T2
-/// q_t z1/3 + q_i z1/6                           = T_source − T1      where the source is isothermal
-/// q_b z2/3 + q_i z2/6 + q_b/h_s                 = T2 − T_coolant     under a film
-/// ```
-///
-/// z = t/k. With q_t and q_b eliminated the flux through the interface is
-/// q_i = U (α T1 − β T2 − (α − 1) T_source − fixed), U = 1/(1/h + base).
-#[derive(Clone, Copy, Debug, PartialEq)]
-struct Column {
-    /// Area resistance beside 1/h, m² K/W.
-    base: f64,
-    /// α: 1, or 3/2 under an isothermal source.
-    upper: f64,
-    /// β: 1, or 1 + z2 Y/6 over a film.
-    lower: f64,
-    /// Temperature difference that a given flux on the back uses up, K.
-    fixed: f64,
-}
-
-/// What is the same in every ring.
-struct Constants {
-    depth: [f64; 2],
-    /// Conductivity times thickness of both plates, W/K.
-    sheet: [f64; 2],
-    /// From the mean of the second plate to the coolant, W/(m² K).
-    back: f64,
-    /// Given on the back, W/m².
-    back_flux: f64,
-    /// Column without heat given on its outer face.
-    plain: Column,
-    /// Column under an isothermal source.
-    heated: Column,
-    inlet: Inlet,
-}
-
-/// Columns of one ring and the heat that crosses them, before temperatures are known.
-#[derive(Clone, Copy, Default)]
-struct Coupling {
-    /// Σ A/(1/h + base) of the plain and of the isothermally heated columns, W/K.
-    conductance: [f64; 2],
-    /// Flux given on the outer face, W/m².
-    flux: f64,
-    /// Outer face held at the source temperature, m².
-    held: f64,
-    /// Faying area, m².
-    touching: f64,
-}
-
-impl Plates {
-    fn constants(&self) -> Constants {
-        let [z1, z2] = [0, 1].map(|k| self.thickness[k] / self.conductivity[k]);
-        let (back, back_flux) = match self.outlet {
-            Outlet::Film(film) => ((z2 / 3.0 + film.recip()).recip(), 0.0),
-            Outlet::Flux(flux) => (0.0, flux),
-            Outlet::Rim => (0.0, 0.0),
-        };
-        let plain = Column {
-            base: (z1 + z2) / 3.0 - z2 * z2 * back / 36.0,
-            upper: 1.0,
-            lower: 1.0 + z2 * back / 6.0,
-            fixed: back_flux * z2 / 6.0,
-        };
-        Constants {
-            depth: [z1, z2],
-            sheet: [0, 1].map(|k| self.thickness[k] * self.conductivity[k]),
-            back,
-            back_flux,
-            plain,
-            heated: Column {
-                base: plain.base - z1 / 12.0,
-                upper: 1.5,
-                ..plain
-            },
-            inlet: self.inlet,
-        }
-    }
-}
-
-impl Constants {
-    /// The two kinds of column with what given fluxes and the source use up of T1 − T2, K.
-    fn columns(&self, coupling: &Coupling) -> [(Column, f64, f64); 2] {
-        let [plain, heated] = coupling.conductance;
-        [
-            (
-                self.plain,
-                plain,
-                self.plain.fixed + coupling.flux * self.depth[0] / 6.0,
-            ),
-            (self.heated, heated, self.heated.fixed + 0.5),
-        ]
-    }
+    /// From each ring centre to the part of its outer edge where the plate ends: the angle lost to
+    /// the next ring over ln(e/r).
+    pub rim_shape: [Vec<f64>; 2],
 }
 
 impl Rings {
-    /// The columns of one ring; heat given on part of a ring is smeared over it, a temperature
-    /// given on part of it acts on the same share of the faying area.
-    fn couple(&self, ring: usize, constants: &Constants, conductance: &[f64]) -> Coupling {
-        let (source, area) = (self.source_area[ring], self.plate_area[0][ring]);
-        let share = if area > 0.0 {
-            (source / area).min(1.0)
-        } else {
-            0.0
-        };
-        let patches = self.first_patch[ring]..self.first_patch[ring + 1];
-        let areas = &self.patch_area[patches.clone()];
-        let through = |base: f64| -> f64 {
-            areas
-                .iter()
-                .zip(&conductance[patches.clone()])
-                .map(|(area, h)| area / (h.recip() + base))
-                .sum()
-        };
-        let mut coupling = Coupling {
-            touching: areas.iter().sum(),
-            ..Coupling::default()
-        };
-        let mut plain = 1.0;
-        match constants.inlet {
-            Inlet::Flux(flux) => coupling.flux = flux * share,
-            Inlet::Temperature if share > 0.0 => {
-                coupling.held = source;
-                coupling.conductance[1] = share * through(constants.heated.base);
-                plain = 1.0 - share;
-            }
-            Inlet::Temperature | Inlet::Rim => {}
-        }
-        if plain > 0.0 {
-            coupling.conductance[0] = plain * through(constants.plain.base);
-        }
-        coupling
-    }
-
     /// Temperatures and heat for the conductance of each patch, W/(m² K), 0 and infinity allowed;
     /// none when no path leads from source to sink.
     pub fn flow(&self, plates: &Plates, conductance: &[f64]) -> Option<Flow> {
-        let count = self.source_area.len();
+        let count = self.columns.count();
         let constants = plates.constants();
         let couplings: Vec<Coupling> = (0..count)
-            .map(|ring| self.couple(ring, &constants, conductance))
+            .map(|ring| self.columns.couple(ring, &constants, conductance))
             .collect();
         let mut ladder = Ladder::new(count);
         let mut load = vec![[0.0; 2]; count];
@@ -229,34 +41,30 @@ impl Rings {
                         constants.sheet[plate] * self.shape[plate][ring],
                     );
                 }
+                let rim = constants.sheet[plate] * self.rim_shape[plate][ring];
+                if plate == 0 && plates.inlet == Inlet::Rim {
+                    ladder.rungs[ring][0] += rim;
+                    load[ring][0] += rim;
+                }
+                if plate == 1 && plates.outlet == Outlet::Rim {
+                    ladder.rungs[ring][2] += rim;
+                }
                 // A plate without area here keeps a node of its own at the coolant's temperature.
-                if self.plate_area[plate][ring] <= 0.0 {
+                if self.columns.plate_area[plate][ring] <= 0.0 {
                     ladder.rungs[ring][2 * plate] += 1.0;
                 }
             }
-            self.fill(
+            self.columns.fill(
                 ring,
                 &constants,
                 &couplings[ring],
                 (&mut ladder.rungs[ring], &mut load[ring]),
             );
         }
-        let [first, second] = [0, 1].map(|plate| {
-            (
-                self.last(plate),
-                constants.sheet[plate] * self.rim_shape[plate],
-            )
-        });
-        if plates.inlet == Inlet::Rim {
-            ladder.rungs[first.0][0] += first.1;
-            load[first.0][0] += first.1;
-        }
-        match plates.outlet {
-            Outlet::Rim => ladder.rungs[second.0][2] += second.1,
-            // Given fluxes leave the level open: the last ring is tied to it, and as what enters
-            // also leaves, the tie carries nothing.
-            Outlet::Flux(_) => ladder.rungs[second.0][2] += constants.sheet[1],
-            Outlet::Film(_) => {}
+        // Given fluxes leave the level open: one ring is tied to it, and as what enters also
+        // leaves, the tie carries nothing.
+        if matches!(plates.outlet, Outlet::Flux(_)) {
+            ladder.rungs[self.last(1)][2] += constants.sheet[1];
         }
         let temperatures = ladder.solution(load)?;
         let mut flow = Flow {
@@ -264,114 +72,71 @@ impl Rings {
             ..Flow::default()
         };
         for (ring, mean) in temperatures.into_iter().enumerate() {
-            self.read(ring, &constants, (&couplings[ring], mean), &mut flow);
+            self.columns
+                .read(ring, &constants, (&couplings[ring], mean), &mut flow);
         }
         Some(flow)
     }
 
-    /// Puts the columns of one ring into its block and its right-hand side.
-    fn fill(
-        &self,
-        ring: usize,
-        constants: &Constants,
-        coupling: &Coupling,
-        (block, load): (&mut [f64; 3], &mut [f64; 2]),
-    ) {
-        let [first, second] = [0, 1].map(|plate| self.plate_area[plate][ring]);
-        let held = 3.0 / constants.depth[0] * coupling.held;
-        block[0] += held;
-        block[2] += constants.back * second;
-        load[0] += held + coupling.flux * first;
-        load[1] -= constants.back_flux * second;
-        for (column, through, given) in constants.columns(coupling) {
-            block[0] += through * column.upper * column.upper;
-            block[1] -= through * column.upper * column.lower;
-            block[2] += through * column.lower * column.lower;
-            load[0] += column.upper * through * given;
-            load[1] -= column.lower * through * given;
-        }
-    }
-
-    /// Adds what one ring tells to the sums.
-    fn read(
-        &self,
-        ring: usize,
-        constants: &Constants,
-        (coupling, [t1, t2]): (&Coupling, [f64; 2]),
-        flow: &mut Flow,
-    ) {
-        let [z1, z2] = constants.depth;
-        let [first, second] = [0, 1].map(|plate| self.plate_area[plate][ring]);
-        let [plain, heated] = constants.columns(coupling).map(|(column, through, given)| {
-            through * (column.upper * t1 - column.lower * t2 - given)
-        });
-        let crossing = plain + heated;
-        let held_share = if first > 0.0 {
-            coupling.held / first
-        } else {
-            0.0
-        };
-        // Fluxes times area on the outer faces, over a part of the ring.
-        let entering = |area: f64| {
-            coupling.flux * area + 3.0 / z1 * held_share * area * (1.0 - t1) - 0.5 * heated
-        };
-        let leaving = |area: f64| {
-            constants.back_flux * area + constants.back * (t2 * area - crossing * z2 / 6.0)
-        };
-        flow.plate[0] += t1 * first;
-        flow.plate[1] += t2 * second;
-        flow.back += t2 * second - z2 * (leaving(second) / 3.0 + crossing / 6.0);
-        flow.heat += match constants.inlet {
-            Inlet::Rim => crossing,
-            Inlet::Flux(_) | Inlet::Temperature => entering(first),
-        };
-        flow.interface += (t1 - t2) * coupling.touching
-            - crossing * (z1 + z2) / 3.0
-            - (entering(coupling.touching) * z1 + leaving(coupling.touching) * z2) / 6.0;
-        if first > 0.0 {
-            let face = t1 + z1 * (entering(first) / 3.0 + crossing / 6.0) / first;
-            let face = if coupling.held > 0.0 { 1.0 } else { face };
-            flow.source += face * self.source_area[ring];
-            flow.hottest = flow.hottest.max(face);
-        }
-    }
-
     /// The last ring of a plate that has any area.
     fn last(&self, plate: usize) -> usize {
-        self.plate_area[plate]
+        self.columns.plate_area[plate]
             .iter()
             .rposition(|area| *area > 0.0)
             .unwrap_or(0)
     }
 }
 
-/// Radial shape factors between ring centres, and from the last centre to the rim.
+/// Radial shape factors between ring centres, and from each ring centre to the rim.
 ///
 /// ```text
 /// 1/S_j = ln(e/r_j)/Θ_j + ln(r_{j+1}/e)/Θ_{j+1},   Θ = 2A/(e_out² − e_in²)
+/// rim:  (Θ_j − Θ_{j+1})/ln(e/r_j)
 /// ```
 ///
 /// e is the radius between the rings and Θ the angle over which the plate is there: 2π for a
 /// whole ring, less where an edge or a neighbour's cell cuts it.
-pub fn shapes(hole_radius: f64, edges: &[f64], areas: &[f64]) -> (Vec<f64>, f64) {
-    let mut shape = vec![0.0; areas.len().saturating_sub(1)];
-    let mut rim = 0.0;
-    let mut behind: Option<f64> = None;
-    for (ring, area) in areas.iter().enumerate() {
-        let (inner, outer) = (edges[ring].max(hole_radius), edges[ring + 1]);
-        if *area <= 0.0 {
-            behind = None;
-            continue;
-        }
-        let centre = 0.5 * (inner + outer);
-        let angle = 2.0 * area / ((outer - inner) * (outer + inner));
-        if let Some(before) = behind {
-            shape[ring - 1] = (before + (centre / inner).ln() / angle).recip();
-        }
-        let ahead = (outer / centre).ln() / angle;
-        rim = ahead.recip();
-        behind = Some(ahead);
-    }
+pub fn shapes(hole_radius: f64, edges: &[f64], areas: &[f64]) -> (Vec<f64>, Vec<f64>) {
+    let bounds = |ring: usize| (edges[ring].max(hole_radius), edges[ring + 1]);
+    let angles: Vec<f64> = areas
+        .iter()
+        .enumerate()
+        .map(|(ring, area)| {
+            let (inner, outer) = bounds(ring);
+            if *area > 0.0 {
+                2.0 * area / ((outer - inner) * (outer + inner))
+            } else {
+                0.0
+            }
+        })
+        .collect();
+    let to_outer = |ring: usize| {
+        let (inner, outer) = bounds(ring);
+        (outer / (0.5 * (inner + outer))).ln()
+    };
+    let shape = (0..areas.len().saturating_sub(1))
+        .map(|ring| {
+            let (inner, outer) = bounds(ring + 1);
+            let from_inner = (0.5 * (inner + outer) / inner).ln();
+            let [here, next] = [angles[ring], angles[ring + 1]];
+            if here > 0.0 && next > 0.0 {
+                (to_outer(ring) / here + from_inner / next).recip()
+            } else {
+                0.0
+            }
+        })
+        .collect();
+    let rim = (0..areas.len())
+        .map(|ring| {
+            let next = angles.get(ring + 1).copied().unwrap_or(0.0);
+            let lost = angles[ring] - next;
+            if lost > 0.0 {
+                lost / to_outer(ring)
+            } else {
+                0.0
+            }
+        })
+        .collect();
     (shape, rim)
 }
 
@@ -381,7 +146,7 @@ pub fn shapes(hole_radius: f64, edges: &[f64], areas: &[f64]) -> (Vec<f64>, f64)
 /// grow geometrically. Where contact reaches the rim all are equally wide.
 pub fn edges(hole_radius: f64, contact_radius: f64, rim_radius: f64, rings: usize) -> Vec<f64> {
     let (a, c) = (hole_radius, contact_radius);
-    if !(c < rim_radius * (1.0 - 1e-9)) {
+    if c >= rim_radius * (1.0 - 1e-9) {
         return (0..=rings)
             .map(|ring| a + (rim_radius - a) * ring as f64 / rings as f64)
             .collect();

@@ -4,7 +4,7 @@ use crate::{
     joint::{Outline, Sink, Zone},
     resistance::{
         cells::{Cell, Cells},
-        network::{Flow, Inlet, Outlet, Plates},
+        column::{Flow, Inlet, Outlet, Plates},
     },
 };
 
@@ -32,7 +32,7 @@ pub struct Path {
     pub contact_per_bolt: Vec<f64>,
     /// Mean of the heated zone to mean of the sink surface.
     pub source_to_sink: f64,
-    /// From the mean sink surface to the coolant: 1/(h_s A); none without a film.
+    /// From the mean sink surface to the coolant: `1/(h_s A)`; none without a film.
     pub coolant_drop: Option<f64>,
     /// Source to sink when the faces meet perfectly wherever both plates are.
     pub perfect_contact: f64,
@@ -51,10 +51,10 @@ pub struct Path {
     pub resistance_upper: Option<f64>,
 }
 
-/// Sum of the cells, per watt through the joint; temperatures above the coolant.
+/// The whole joint per watt through it; temperatures above the coolant, K/W.
 #[derive(Clone, Copy, Debug)]
-struct Whole {
-    source: f64,
+pub(super) struct Whole {
+    pub(super) source: f64,
     hottest: f64,
     node_to_node: f64,
     interface: f64,
@@ -69,7 +69,7 @@ struct Faces {
 }
 
 impl Whole {
-    const BLOCKED: Self = Self {
+    pub(super) const BLOCKED: Self = Self {
         source: f64::INFINITY,
         hottest: f64::INFINITY,
         node_to_node: f64::INFINITY,
@@ -88,7 +88,7 @@ impl Cells {
     /// The borders of cells carry no heat, so several bolts are never too good for the field used
     /// but for the mapping of each cell to circles.
     pub fn solve<H: Fn(f64) -> f64>(&self, load: &Load<H>) -> Path {
-        let cells = &self.cells;
+        let cells = &self.fine;
         let mut faces: Vec<Option<Faces>> = Vec::with_capacity(cells.len());
         let twins: Vec<usize> = (0..cells.len())
             .map(|index| self.twin(cells, index, load))
@@ -100,14 +100,42 @@ impl Cells {
             .iter()
             .map(|twin| faces[*twin].as_ref().map_or(0.0, |faces| faces.contact))
             .collect();
-        let contact: f64 = contact_per_bolt.iter().sum();
         let whole = self.whole(cells, &twins, load, |index| {
             faces[index].as_ref().map(|faces| faces.conductance.clone())
         });
         let alike: Vec<usize> = cells.iter().map(|cell| cell.like).collect();
         let perfect = self.whole(cells, &alike, load, |index| {
-            Some(vec![f64::INFINITY; cells[index].rings.patch_area.len()])
+            Some(vec![
+                f64::INFINITY;
+                cells[index].rings.columns.patch_area.len()
+            ])
         });
+        self.path_of(load, &contact_per_bolt, [&whole, &perfect])
+    }
+
+    /// The path with another solution of the plates: contact and bounds are those of the cells.
+    pub(super) fn path<H: Fn(f64) -> f64>(
+        &self,
+        load: &Load<H>,
+        whole: &Whole,
+        perfect: &Whole,
+    ) -> Path {
+        let contact: Vec<f64> = self
+            .fine
+            .iter()
+            .enumerate()
+            .map(|(index, cell)| cell.faces(index, load, Shanks::None).contact)
+            .collect();
+        self.path_of(load, &contact, [whole, perfect])
+    }
+
+    fn path_of<H: Fn(f64) -> f64>(
+        &self,
+        load: &Load<H>,
+        contact_per_bolt: &[f64],
+        [whole, perfect]: [&Whole; 2],
+    ) -> Path {
+        let contact: f64 = contact_per_bolt.iter().sum();
         let film = self.film_drop();
         let source_to_sink = whole.source - film;
         let perfect_contact = perfect.source - film;
@@ -120,9 +148,9 @@ impl Cells {
             interface_drop: whole.interface,
             hottest: whole.hottest - film,
             resistance_lower: self.lower(contact, load),
-            resistance_upper: self.upper(source_to_sink, load),
+            resistance_upper: self.upper(load),
             contact,
-            contact_per_bolt,
+            contact_per_bolt: contact_per_bolt.to_vec(),
         }
     }
 
@@ -130,7 +158,7 @@ impl Cells {
     ///
     /// The method is of second order in the ring width, so the error left is about a third of it.
     pub fn ring_error<H: Fn(f64) -> f64>(&self, load: &Load<H>) -> f64 {
-        let [fine, coarse] = [&self.cells, &self.coarse].map(|cells| {
+        let [fine, coarse] = [&self.fine, &self.coarse].map(|cells| {
             let twins: Vec<usize> = (0..cells.len())
                 .map(|index| self.twin(cells, index, load))
                 .collect();
@@ -165,14 +193,14 @@ impl Cells {
     }
 
     /// Mean sink surface above the coolant, K/W.
-    fn film_drop(&self) -> f64 {
+    pub(super) fn film_drop(&self) -> f64 {
         match self.plan.sink {
             Sink::Film(film) => (film * self.plate_area[1]).recip(),
             Sink::IsothermalBack | Sink::Rim => 0.0,
         }
     }
 
-    fn plates<H>(&self, load: &Load<H>) -> Plates {
+    pub(super) fn plates<H>(&self, load: &Load<H>) -> Plates {
         Plates {
             thickness: self.plan.thickness,
             conductivity: load.conductivity,
@@ -204,7 +232,12 @@ impl Cells {
         };
         let mut solved: Vec<Option<Flow>> = Vec::with_capacity(cells.len());
         for (index, cell) in cells.iter().enumerate() {
-            let heated = cell.rings.source_area.iter().any(|area| *area > 0.0);
+            let heated = cell
+                .rings
+                .columns
+                .source_area
+                .iter()
+                .any(|area| *area > 0.0);
             let flow = if !heated {
                 // No heat enters here: the cell stays at the coolant's temperature.
                 Some(Flow::default())
@@ -228,7 +261,12 @@ impl Cells {
                 sum.plate[plate] += flow.plate[plate];
             }
         }
-        if !(sum.heat > 0.0) {
+        self.whole_of(&sum)
+    }
+
+    /// Sums over the plates brought to one watt.
+    pub(super) fn whole_of(&self, sum: &Flow) -> Whole {
+        if sum.heat.is_nan() || sum.heat <= 0.0 {
             return Whole::BLOCKED;
         }
         let [first, second] = [0, 1].map(|plate| sum.plate[plate] / self.plate_area[plate]);
@@ -264,22 +302,18 @@ impl Cells {
     }
 
     /// The network without shank where it is an admissible field: a path beside it only helps.
-    fn upper<H: Fn(f64) -> f64>(&self, source_to_sink: f64, load: &Load<H>) -> Option<f64> {
-        if !self.is_round() {
-            return None;
-        }
-        if load.shanks[0] == 0.0 {
-            return Some(source_to_sink);
-        }
-        let bare = self.whole(&self.cells, &[0], load, |index| {
-            let faces = self.cells[index].faces(index, load, Shanks::None);
-            Some(faces.conductance)
-        });
-        Some(bare.source - self.film_drop())
+    fn upper<H: Fn(f64) -> f64>(&self, load: &Load<H>) -> Option<f64> {
+        self.is_round().then(|| {
+            let bare = self.whole(&self.fine, &[0], load, |index| {
+                let faces = self.fine[index].faces(index, load, Shanks::None);
+                Some(faces.conductance)
+            });
+            bare.source - self.film_drop()
+        })
     }
 
     /// One bolt in the middle of two equal discs, heated all over.
-    fn is_round(&self) -> bool {
+    pub fn is_round(&self) -> bool {
         const ROUNDING: f64 = 1e-9;
         let [(first, origin), (second, middle)] = self.plan.outlines;
         let (Outline::Disc { radius }, Outline::Disc { radius: other }) = (first, second) else {
@@ -305,15 +339,6 @@ enum Shanks {
 }
 
 impl Cell {
-    /// Pressure on a patch, Pa.
-    pub(super) fn pressure(&self, patch: usize, forces: &[f64]) -> f64 {
-        self.patches
-            .of(patch)
-            .iter()
-            .map(|(bolt, weight)| forces[*bolt] * weight)
-            .sum()
-    }
-
     /// Conductance of every patch.
     ///
     /// A shank joins the outer faces; beside the interface, in the rings under its head, it errs
@@ -325,10 +350,11 @@ impl Cell {
             Shanks::None => 0.0,
         };
         let mut contact = 0.0;
-        let mut conductance = Vec::with_capacity(self.rings.patch_area.len());
+        let mut conductance = Vec::with_capacity(self.rings.columns.patch_area.len());
         for (ring, share) in self.head_share.iter().enumerate() {
-            let patches = self.rings.first_patch[ring]..self.rings.first_patch[ring + 1];
-            let area: f64 = self.rings.patch_area[patches.clone()].iter().sum();
+            let patches =
+                self.rings.columns.first_patch[ring]..self.rings.columns.first_patch[ring + 1];
+            let area: f64 = self.rings.columns.patch_area[patches.clone()].iter().sum();
             let beside = if *share > 0.0 {
                 shank * share / area
             } else {
@@ -338,9 +364,9 @@ impl Cell {
                 let local = if self.patches.of(patch).is_empty() {
                     open
                 } else {
-                    (load.conductance)(self.pressure(patch, load.forces))
+                    (load.conductance)(self.patches.pressure(patch, load.forces))
                 };
-                contact += self.rings.patch_area[patch] * local;
+                contact += self.rings.columns.patch_area[patch] * local;
                 conductance.push(local + beside);
             }
         }

@@ -4,6 +4,7 @@ use std::f64::consts::TAU;
 
 use crate::resistance::{
     cells::{Cell, Plan, View},
+    column::Columns,
     network::{self, Rings},
     region::outside_disc,
 };
@@ -27,7 +28,29 @@ impl Patches {
         &self.weights[self.first_weight[patch]..self.first_weight[patch + 1]]
     }
 
-    fn push(&mut self, weights: impl Iterator<Item = (usize, f64)>) {
+    /// Pressure on a patch, Pa.
+    pub(super) fn pressure(&self, patch: usize, forces: &[f64]) -> f64 {
+        self.of(patch)
+            .iter()
+            .map(|(bolt, weight)| forces[*bolt] * weight)
+            .sum()
+    }
+
+    /// Divides the weights by the share of each bolt's force that they carry on patches of the
+    /// given areas.
+    pub(super) fn restore(&mut self, areas: &[f64], bolts: usize) {
+        let mut carried = vec![0.0; bolts];
+        for (patch, area) in areas.iter().enumerate() {
+            for (bolt, weight) in self.of(patch) {
+                carried[*bolt] += area * weight;
+            }
+        }
+        for (bolt, weight) in &mut self.weights {
+            *weight /= carried[*bolt];
+        }
+    }
+
+    pub(super) fn push(&mut self, weights: impl Iterator<Item = (usize, f64)>) {
         self.weights
             .extend(weights.filter(|(_, weight)| *weight > 0.0));
         self.first_weight.push(self.weights.len());
@@ -44,7 +67,7 @@ pub(super) fn build(plan: &Plan, views: &[View], count: usize) -> (Vec<Cell>, Ve
         .collect();
     let mut carried = vec![0.0; views.len()];
     for cell in &cells {
-        for (patch, area) in cell.rings.patch_area.iter().enumerate() {
+        for (patch, area) in cell.rings.columns.patch_area.iter().enumerate() {
             for (bolt, weight) in cell.patches.of(patch) {
                 carried[*bolt] += area * weight;
             }
@@ -108,12 +131,14 @@ fn cell(plan: &Plan, view: &View, bolt: usize, count: usize) -> Cell {
     let [(shape1, rim1), (shape2, rim2)] =
         [0, 1].map(|k| network::shapes(holes[k], &edges, &plate_area[k]));
     let mut rings = Rings {
-        source_area: between(&|radius| view.source.area_within(radius)),
-        plate_area,
+        columns: Columns {
+            source_area: between(&|radius| view.source.area_within(radius)),
+            plate_area,
+            first_patch: vec![0],
+            patch_area: Vec::new(),
+        },
         shape: [shape1, shape2],
         rim_shape: [rim1, rim2],
-        first_patch: vec![0],
-        patch_area: Vec::new(),
     };
     let mut patches = Patches {
         first_weight: vec![0],
@@ -127,9 +152,12 @@ fn cell(plan: &Plan, view: &View, bolt: usize, count: usize) -> Cell {
                 bolt,
                 radius: [edges[ring], edges[ring + 1]],
             };
-            around.patches(*area, &mut rings.patch_area, &mut patches);
+            around.patches(*area, &mut rings.columns.patch_area, &mut patches);
         }
-        rings.first_patch.push(rings.patch_area.len());
+        rings
+            .columns
+            .first_patch
+            .push(rings.columns.patch_area.len());
     }
     Cell {
         head_share: head.iter().map(|area| area / head_area).collect(),
@@ -216,7 +244,7 @@ fn alike(first: &Cell, second: &Cell) -> bool {
                 .zip(b)
                 .all(|(one, other)| (one - other).abs() <= SAME * scale)
     };
-    let (a, b) = (&first.rings, &second.rings);
+    let (a, b) = (&first.rings.columns, &second.rings.columns);
     near(&first.edges, &second.edges)
         && near(&first.head_share, &second.head_share)
         && near(&a.source_area, &b.source_area)
@@ -224,11 +252,11 @@ fn alike(first: &Cell, second: &Cell) -> bool {
         && a.first_patch == b.first_patch
         && (0..a.source_area.len()).all(|ring| {
             let sorted = |cell: &Cell| {
-                let mut values: Vec<(f64, f64)> = (cell.rings.first_patch[ring]
-                    ..cell.rings.first_patch[ring + 1])
+                let mut values: Vec<(f64, f64)> = (cell.rings.columns.first_patch[ring]
+                    ..cell.rings.columns.first_patch[ring + 1])
                     .map(|patch| {
                         let weight = cell.patches.of(patch).iter().map(|(_, w)| w).sum();
-                        (weight, cell.rings.patch_area[patch])
+                        (weight, cell.rings.columns.patch_area[patch])
                     })
                     .collect();
                 values.sort_by(|one, other| {

@@ -34,7 +34,7 @@ pub struct Wall {
 /// The one place with g/mol: the constant 6.8 carries it.
 /// Valid: clean engineering metals at 273 K and above.
 /// Source: Song & Yovanovich 1987, constants from memory; within 20 % of Trott et al. 2010.
-/// Checked: `accommodation_relation_is_near_the_measured_one` in tests/validation_conductance.rs.
+/// Checked: `accommodation_relation_is_near_the_measured_one` in `tests/validation_conductance.rs`.
 pub fn accommodation(gas_mass: f64, molecule: Molecule, wall: Wall) -> f64 {
     let weight = (-0.57 * (wall.temperature - 273.0) / 273.0).exp();
     let effective_mass = match molecule {

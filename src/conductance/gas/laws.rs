@@ -36,18 +36,11 @@ pub struct Gap {
 /// `load` is P/H, H the contact hardness of the softer face. Held below 1e-6 (4.75 σ: the tallest
 /// peaks) and above 0.3, so that faces which just part keep the gap of their peaks.
 /// Source: area of overlap of a Gaussian surface, exact.
-/// Checked: `separation_fit_agrees_with_the_exact_form` in tests/validation_conductance.rs,
+/// Checked: `separation_fit_agrees_with_the_exact_form` in `tests/validation_conductance.rs`,
 /// `separation_is_held_at_its_ends`.
 #[inline]
 pub fn separation_ratio(load: f64) -> f64 {
-    let load = if load < LIGHTEST_LOAD {
-        LIGHTEST_LOAD
-    } else if load > HEAVIEST_LOAD {
-        HEAVIEST_LOAD
-    } else {
-        load
-    };
-    -normal_quantile(load)
+    -normal_quantile(load.clamp(LIGHTEST_LOAD, HEAVIEST_LOAD))
 }
 
 /// Separation of the mean planes over σ, as published.
@@ -58,7 +51,7 @@ pub fn separation_ratio(load: f64) -> f64 {
 ///
 /// `load` is P/H. Valid: 1e-6 to 0.02, within 0.75 % of [`separation_ratio`].
 /// Source: Mechanical Engineers' Handbook, 3rd ed., vol. 4, p. 375.
-/// Checked: `separation_fit_agrees_with_the_exact_form` in tests/validation_conductance.rs.
+/// Checked: `separation_fit_agrees_with_the_exact_form` in `tests/validation_conductance.rs`.
 pub fn separation_fit(load: f64) -> f64 {
     1.185 * (-(3.132 * load).ln()).powf(0.547)
 }
@@ -79,7 +72,7 @@ impl Gap {
     ///
     /// Valid: Gaussian faces, M > 0 (without a jump at the walls it diverges).
     /// Source: Yovanovich, `DeVaal` & Hegazy 1982, from memory.
-    /// Checked: `gas_between_the_aluminium_pair` in tests/validation_conductance.rs.
+    /// Checked: `gas_between_the_aluminium_pair` in `tests/validation_conductance.rs`.
     pub fn integral(&self, gas: &GapGas) -> Integral {
         let centre = self.separation / self.roughness;
         let jump = gas.parameter / self.roughness;
@@ -107,14 +100,14 @@ impl Gap {
     ///
     /// Always below [`Gap::integral`], by up to 32 % where a thin jump meets a heavy load.
     /// Source: Mechanical Engineers' Handbook, 3rd ed., vol. 4, p. 375.
-    /// Checked: `corrected_gas_law_agrees_with_the_integral` in tests/validation_conductance.rs.
+    /// Checked: `corrected_gas_law_agrees_with_the_integral` in `tests/validation_conductance.rs`.
     pub fn simple(&self, gas: &GapGas) -> f64 {
         gas.conductivity / (self.separation + gas.parameter)
     }
 
     /// Conductance of the gas, W/(m² K): the even gap with the correction for its heights.
     ///
-    /// Checked: `corrected_gas_law_agrees_with_the_integral` in tests/validation_conductance.rs.
+    /// Checked: `corrected_gas_law_agrees_with_the_integral` in `tests/validation_conductance.rs`.
     pub fn corrected(&self, gas: &GapGas) -> f64 {
         GapLaw::new(gas, self.roughness).conductance(self.separation)
     }

@@ -20,7 +20,7 @@ const PASTE_END: f64 = 1e6;
 
 pub(super) fn of(local: &Local, peak_pressure: f64) -> Vec<Caution> {
     let mut cautions = Vec::new();
-    if !(peak_pressure > 0.0) {
+    if peak_pressure <= 0.0 {
         return cautions;
     }
     if let Some(points) = &local.interface.measured {

@@ -10,7 +10,7 @@ use crate::conductance::spots::Mode;
 ///
 /// `load` is P/H. Valid: 1e-6 to 0.02 (range from memory); above it is low, 11 % at 0.11.
 /// Source: Yovanovich 1982, in Mechanical Engineers' Handbook, 3rd ed., vol. 4, p. 374.
-/// Checked: `exact_laws_agree_with_their_fits` in tests/validation_conductance.rs.
+/// Checked: `exact_laws_agree_with_their_fits` in `tests/validation_conductance.rs`.
 #[inline]
 pub fn plastic_fit(load: f64) -> f64 {
     1.25 * load.powf(0.95)
@@ -22,9 +22,9 @@ pub fn plastic_fit(load: f64) -> f64 {
 /// h σ/(k m) = 1.55 (P/H_e)^0.94
 /// ```
 ///
-/// `load` is P/H_e. Valid: 1e-5 to 1e-2.
+/// `load` is `P/H_e`. Valid: 1e-5 to 1e-2.
 /// Source: Mikic 1974, from memory.
-/// Checked: `exact_laws_agree_with_their_fits` in tests/validation_conductance.rs.
+/// Checked: `exact_laws_agree_with_their_fits` in `tests/validation_conductance.rs`.
 pub fn elastic_fit(load: f64) -> f64 {
     1.55 * load.powf(0.94)
 }
@@ -41,7 +41,7 @@ impl Mode {
     ///
     /// Valid: X from 1e-6 to 1e-2; steps of a few per cent where the branches meet.
     /// Source: Sridhar & Yovanovich 1996, from memory.
-    /// Checked: `exact_laws_agree_with_their_fits` in tests/validation_conductance.rs.
+    /// Checked: `exact_laws_agree_with_their_fits` in `tests/validation_conductance.rs`.
     pub fn elastic_plastic_fit(&self, pressure: f64) -> f64 {
         let load = pressure / self.hardness;
         if self.strain < 5.0 {

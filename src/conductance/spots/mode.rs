@@ -90,7 +90,7 @@ impl Mode {
     /// Source: Sridhar & Yovanovich 1996, constants from memory; both limits agree numerically
     /// with the pure laws.
     /// Checked: `elastic_plastic_law_tends_to_the_pure_laws`, and against its fit in
-    /// tests/validation_conductance.rs.
+    /// `tests/validation_conductance.rs`.
     pub fn elastic_plastic(asperities: &Asperities) -> Self {
         let flow_stress = asperities.hardness / HARDNESS_OVER_FLOW_STRESS;
         let strain = 1.67 * asperities.elastic_modulus * asperities.slope / flow_stress;
@@ -120,7 +120,7 @@ impl Mode {
     /// there is held and `conductance/beyond-hardness` said. No pressure, no conductance.
     /// Source: Cooper, Mikic & Yovanovich 1969, Mikic 1974, Sridhar & Yovanovich 1996, from memory;
     /// the published fits agree within 2 to 4 %.
-    /// Checked: `exact_laws_agree_with_their_fits` in tests/validation_conductance.rs,
+    /// Checked: `exact_laws_agree_with_their_fits` in `tests/validation_conductance.rs`,
     /// `spots_carry_the_area_and_the_conductance`.
     #[inline]
     pub fn reduced_conductance(&self, pressure: f64) -> f64 {

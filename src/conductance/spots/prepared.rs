@@ -145,7 +145,7 @@ impl HardnessCurve {
     ///
     /// Source: the form c₁ (1.62 σ/m)^c₂ in J. Thermophys. Heat Transfer 18(3), 2004; the exponent
     /// from memory.
-    /// Checked: `stainless_pair_by_microhardness` in tests/validation_conductance.rs.
+    /// Checked: `stainless_pair_by_microhardness` in `tests/validation_conductance.rs`.
     fn of(hardness: Hardness, surfaces: &Surfaces) -> Self {
         match hardness {
             Hardness::Meyer(coefficient) => Self {

@@ -67,12 +67,11 @@ impl Walk<'_> {
     }
 
     pub(super) fn flag(&mut self, stated: Stated<'_>) -> Option<bool> {
-        match &stated.node.form {
-            Form::Flag(flag) => Some(*flag),
-            _ => {
-                self.wrong(stated);
-                None
-            }
+        if let Form::Flag(flag) = &stated.node.form {
+            Some(*flag)
+        } else {
+            self.wrong(stated);
+            None
         }
     }
 

@@ -61,7 +61,7 @@ fn half_angle_is_returned_as_given() {
 
 #[test]
 fn vdi_angle_of_the_example_with_an_m10() {
-    // facts of VDI 2230: d_w 14.63, l_K 40, D_A 40 mm: tan φ = 0.5259.
+    // Worked example of the VDI 2230 angle: d_w 14.63, l_K 40, D_A 40 mm: tan φ = 0.5259.
     let wide = Pair {
         hole_radius: 5.5e-3,
         bearing_radius: 14.63e-3 / 2.0,

@@ -77,6 +77,8 @@ fn arcs_without_a_disc_lose_its_width() {
     assert!((left - 2.0 * TAU / 3.0).abs() < 1e-13);
 }
 
+const STEPS: u32 = 4000;
+
 proptest! {
     #![proptest_config(ProptestConfig::with_cases(60))]
 
@@ -92,7 +94,6 @@ proptest! {
         sides.push(Side::Line { normal: [cut.0.cos(), cut.0.sin()], offset: cut.1 });
         sides.push(Side::Circle { centre: [disc.0, disc.1], radius: disc.2 });
         let region = Region::new(&sides);
-        const STEPS: u32 = 4000;
         let counted: f64 = (0..STEPS)
             .map(|step| {
                 let r = radius * (f64::from(step) + 0.5) / f64::from(STEPS);

@@ -1,0 +1,159 @@
+//! Whether holes and seats lie on their plates and apart from each other.
+
+use crate::{
+    diagnostic::Fault,
+    joint::{
+        collector::{Collector, Wording, fault},
+        geometry::depth_at,
+        plates::PlateDraft,
+        tree::Span,
+    },
+    units::{self, Quantity},
+};
+
+/// Touching within this is not yet a fault, m.
+const SLACK: f64 = 1e-9;
+
+/// What the bolts of a group need around their places. What is not known is zero.
+#[derive(Clone, Copy, Debug, Default)]
+pub(super) struct Land {
+    /// Hole radius in each plate, m.
+    pub holes: [f64; 2],
+    /// Outer radius of the seat on the outer face of each plate, m.
+    pub seats: [f64; 2],
+    /// Plate on which the head sits.
+    pub head_plate: usize,
+}
+
+/// The places of a group with what they need.
+#[derive(Debug)]
+pub(super) struct Site {
+    /// What each place needs.
+    pub land: Land,
+    /// Places in joint coordinates, m, each with the bytes that state it.
+    pub places: Vec<([f64; 2], Span)>,
+}
+
+/// Every hole and every seat must lie on its plate; one fault for each place is enough.
+pub(super) fn fit(site: &Site, plates: &[PlateDraft; 2], collector: &mut Collector) {
+    for (point, span) in &site.places {
+        if collector.is_full() {
+            return;
+        }
+        let faults = [0, 1].map(|index| beyond(site.land, index, *point, &plates[index]));
+        if let Some(mut told) = faults.into_iter().flatten().next() {
+            told.span = span.clone();
+            collector.report(told);
+        }
+    }
+}
+
+fn beyond(land: Land, index: usize, point: [f64; 2], plate: &PlateDraft) -> Option<Fault> {
+    let (outline, origin) = plate.placed()?;
+    let depth = depth_at(outline, origin, point);
+    if depth + SLACK < land.holes[index] {
+        return Some(
+            fault(
+                "plate/hole-outside",
+                &(0..0),
+                format!(
+                    "the hole at {} does not lie inside plate `{}`",
+                    shown(point),
+                    plate.name
+                ),
+            )
+            .expecting(format!("expected on plate `{}`", plate.name))
+            .help(
+                "`at` is measured from the lower left corner of the first plate (round: its centre)",
+            ),
+        );
+    }
+    let seat = land.seats[index];
+    let part = if index == land.head_plate {
+        "head"
+    } else {
+        "nut"
+    };
+    (depth + SLACK < seat).then(|| {
+        fault(
+            "plate/head-beyond-edge",
+            &(0..0),
+            format!(
+                "the {part} at {} reaches beyond the edge of plate `{}`",
+                shown(point),
+                plate.name
+            ),
+        )
+        .expecting(format!(
+            "expected at least {} from the edge",
+            units::show(seat, Quantity::Length)
+        ))
+    })
+}
+
+/// No two holes, heads or nuts may share the same land.
+pub(super) fn apart(sites: &[Site], collector: &mut Collector) {
+    let mut bolts: Vec<(Land, [f64; 2], &Span)> = sites
+        .iter()
+        .flat_map(|site| {
+            site.places
+                .iter()
+                .map(|(point, span)| (site.land, *point, span))
+        })
+        .collect();
+    // Along x the neighbours of a bolt stand next to it, so that thousands of bolts are quick.
+    bolts.sort_by(|one, other| one.1[0].total_cmp(&other.1[0]));
+    let widest = bolts
+        .iter()
+        .flat_map(|(land, ..)| land.seats.into_iter().chain(land.holes))
+        .fold(0.0, f64::max)
+        * 2.0;
+    for (index, (land, point, span)) in bolts.iter().enumerate() {
+        for (other, place, other_span) in &bolts[index + 1..] {
+            if place[0] - point[0] > widest || collector.is_full() {
+                break;
+            }
+            let distance = (place[0] - point[0]).hypot(place[1] - point[1]);
+            let meet = |one: [f64; 2], two: [f64; 2]| {
+                (0..2)
+                    .filter(|plate| one[*plate] > 0.0 && two[*plate] > 0.0)
+                    .any(|plate| distance + SLACK < one[plate] + two[plate])
+            };
+            let (code, what) = if meet(land.holes, other.holes) {
+                ("plate/holes-overlap", "holes")
+            } else if meet(land.seats, other.seats) {
+                ("plate/heads-overlap", "heads or nuts")
+            } else {
+                continue;
+            };
+            let later = if other_span.start >= span.start {
+                other_span
+            } else {
+                span
+            };
+            collector.report(
+                fault(
+                    code,
+                    later,
+                    format!(
+                        "the {what} at {} and {} overlap",
+                        shown(*point),
+                        shown(*place)
+                    ),
+                )
+                .expecting(format!(
+                    "{} from its neighbour",
+                    units::show(distance, Quantity::Length)
+                )),
+            );
+        }
+    }
+}
+
+fn shown(point: [f64; 2]) -> String {
+    format!(
+        "({}, {})",
+        units::show(point[0], Quantity::Length),
+        units::show(point[1], Quantity::Length)
+    )
+}

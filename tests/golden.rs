@@ -1,0 +1,43 @@
+//! Every demo joint, its printed digits. Says *unchanged*, never *right*.
+//!
+//! `RINGSUM_REWRITE=1 cargo test --profile quick --test golden` writes the files anew; read the
+//! difference before you commit it.
+
+use std::{fs, path::Path};
+
+use ringsum::{estimate::Options, joint, report, uncertainty};
+
+/// Draws enough to show the band, few enough to be quick.
+const OPTIONS: Options = Options {
+    draws: 256,
+    seed: 1,
+};
+
+#[test]
+fn demo_joints_print_what_they_printed() {
+    let mut changed = Vec::new();
+    let mut seen = 0;
+    for entry in fs::read_dir("joints").expect("the demo joints are there") {
+        let path = entry.expect("the entry is readable").path();
+        if path.extension().is_none_or(|ending| ending != "toml") {
+            continue;
+        }
+        seen += 1;
+        let text = fs::read_to_string(&path).expect("a joint file is text");
+        let joint = joint::read(&text).unwrap_or_else(|faults| panic!("{path:?}: {faults:#?}"));
+        let found = uncertainty::estimate(&joint, &OPTIONS).expect("a demo joint has a number");
+        let printed = report::text::estimate(&found);
+        let golden = Path::new("tests/golden")
+            .join(path.file_stem().expect("a file has a stem"))
+            .with_extension("txt");
+        if std::env::var_os("RINGSUM_REWRITE").is_some() {
+            fs::create_dir_all("tests/golden").expect("the folder can be made");
+            fs::write(&golden, &printed).expect("the golden file can be written");
+        }
+        if fs::read_to_string(&golden).ok().as_deref() != Some(printed.as_str()) {
+            changed.push(golden);
+        }
+    }
+    assert_eq!(seen, 10, "ten demo joints are shipped");
+    assert!(changed.is_empty(), "changed: {changed:#?}");
+}
