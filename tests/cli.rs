@@ -834,3 +834,44 @@ fn the_schema_is_a_schema() {
     let object = json(&ringsum().arg("schema").assert().code(0));
     assert_eq!(object["$schema"], "http://json-schema.org/draft-07/schema#");
 }
+
+#[test]
+fn a_report_is_coloured_on_request_and_says_the_same() {
+    let folder = starter();
+    let told = |choice: &str| {
+        let command = within(&folder).args(["estimate", "joint.toml", "--draws", "0"]);
+        stdout(&command.args(["--color", choice]).assert().code(0))
+    };
+    let (plain, coloured) = (told("never"), told("always"));
+    assert_ne!(plain, coloured);
+    assert_eq!(anstream::adapter::strip_str(&coloured).to_string(), plain);
+}
+
+#[test]
+fn a_sweep_that_the_joint_cannot_take_is_a_usage_error() {
+    let folder = starter();
+    let path = folder.path().join("joint.toml");
+    let text = fs::read_to_string(&path).unwrap();
+    let given: Vec<&str> = text
+        .lines()
+        .filter(|line| !line.starts_with("friction"))
+        .map(|line| {
+            if line.starts_with("torque") {
+                "preload = \"2 kN\""
+            } else {
+                line
+            }
+        })
+        .collect();
+    fs::write(&path, given.join("\n")).unwrap();
+    within(&folder)
+        .args(["check", "joint.toml"])
+        .assert()
+        .code(0);
+    let told = within(&folder)
+        .args(["torque", "joint.toml", "--draws", "0"])
+        .assert()
+        .code(2)
+        .stdout_eq("");
+    assert!(stderr(&told).contains("preload"), "{}", stderr(&told));
+}
