@@ -80,6 +80,7 @@ mod tests {
             ("thicknes", "thickness"),
             ("Material", "material"),
             ("headmodel", "head_model"),
+            ("__at__", "at"),
         ] {
             assert_eq!(guess(slip).as_deref(), Some(key), "{slip}");
         }

@@ -1,5 +1,18 @@
 //! What every code means and what to do about it.
 
+use std::sync::LazyLock;
+
+use crate::diagnostic::Caution;
+
+mod conductance;
+mod file;
+mod geometry;
+mod laws;
+mod material;
+mod preload;
+mod pressure;
+mod service;
+
 /// What a code stands for.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
 pub enum Kind {
@@ -11,21 +24,32 @@ pub enum Kind {
     Law,
 }
 
+impl Kind {
+    /// The kind as a word.
+    pub fn name(self) -> &'static str {
+        match self {
+            Self::Fault => "fault",
+            Self::Caution(_) => "caution",
+            Self::Law => "law",
+        }
+    }
+}
+
 /// How much a caution matters; graver ones sort first.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
 pub enum Gravity {
     /// People or hardware can be hurt, or the number is likely wrong.
     Grave,
-    /// A law left the range it was checked in.
+    /// A law or a value left the range it was checked in.
     Range,
-    /// Worth knowing.
+    /// Worth knowing when the number is used.
     Note,
 }
 
 /// One code.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub struct Entry {
-    /// Stable code.
+    /// Stable code: `preload/over-yield`.
     pub code: &'static str,
     /// What it stands for.
     pub kind: Kind,
@@ -42,7 +66,7 @@ pub struct Entry {
 /// The formal side of a law.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub struct Law {
-    /// The equation.
+    /// The equation, in plain Unicode.
     pub equation: &'static str,
     /// Where it holds.
     pub range: &'static str,
@@ -50,12 +74,254 @@ pub struct Law {
     pub source: &'static str,
 }
 
-/// The entry of a code.
+/// The entry of a code. A law may be called without its family: `planes` is `law/planes`.
 pub fn entry(code: &str) -> Option<&'static Entry> {
-    entries().iter().find(|entry| entry.code == code)
+    entries()
+        .iter()
+        .find(|entry| entry.code == code || entry.code.strip_prefix("law/") == Some(code))
 }
 
-/// Every entry.
+/// Every entry: faults, then cautions, then laws, each family together.
 pub fn entries() -> &'static [Entry] {
-    &[]
+    static ENTRIES: LazyLock<Vec<Entry>> = LazyLock::new(|| {
+        let mut entries = [
+            file::ENTRIES,
+            geometry::ENTRIES,
+            preload::ENTRIES,
+            pressure::ENTRIES,
+            conductance::ENTRIES,
+            material::ENTRIES,
+            service::ENTRIES,
+            laws::ENTRIES,
+        ]
+        .concat();
+        entries.sort_by_key(|entry| match entry.kind {
+            Kind::Fault => 0,
+            Kind::Caution(_) => 1,
+            Kind::Law => 2,
+        });
+        entries
+    });
+    &ENTRIES
+}
+
+/// How much a caution matters. A code without an entry counts as grave, so that it is never buried.
+pub fn gravity(code: &str) -> Gravity {
+    match entry(code).map(|entry| entry.kind) {
+        Some(Kind::Caution(gravity)) => gravity,
+        _ => Gravity::Grave,
+    }
+}
+
+/// Puts the graver cautions first; equally grave ones keep their order.
+pub fn sort_by_gravity(cautions: &mut [Caution]) {
+    cautions.sort_by_key(|caution| gravity(caution.code));
+}
+
+/// An entry of a fault: code, title, meaning, remedy.
+const fn fault(
+    code: &'static str,
+    title: &'static str,
+    meaning: &'static str,
+    remedy: &'static str,
+) -> Entry {
+    Entry {
+        code,
+        kind: Kind::Fault,
+        title,
+        meaning,
+        remedy,
+        law: None,
+    }
+}
+
+impl Gravity {
+    /// An entry of a caution: code, title, and meaning with remedy.
+    const fn entry(
+        self,
+        code: &'static str,
+        title: &'static str,
+        [meaning, remedy]: [&'static str; 2],
+    ) -> Entry {
+        Entry {
+            code,
+            kind: Kind::Caution(self),
+            title,
+            meaning,
+            remedy,
+            law: None,
+        }
+    }
+}
+
+impl Law {
+    /// An entry of a law: code, title, and meaning with remedy.
+    const fn entry(
+        self,
+        code: &'static str,
+        title: &'static str,
+        [meaning, remedy]: [&'static str; 2],
+    ) -> Entry {
+        Entry {
+            code,
+            kind: Kind::Law,
+            title,
+            meaning,
+            remedy,
+            law: Some(self),
+        }
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    /// The codes that faults and cautions carry; a new one needs its entry.
+    const CODES: &str = "
+        file/not-found file/not-utf8 file/empty file/too-large file/syntax file/unknown-key
+        file/missing-key file/wrong-type file/format file/duplicate unit/bare-number
+        unit/not-a-quantity value/range value/min-above-max name/unknown plate/hole-outside
+        plate/holes-overlap plate/hole-too-small plate/head-beyond-edge plate/no-overlap
+        fastener/count fastener/no-place zone/outside service/cold-contact material/cold-data
+        set/bad-override
+        preload/friction-scatter preload/over-yield preload/over-90-percent preload/over-proof
+        preload/head-pressure preload/short-engagement preload/low-use preload/suspicious-torque
+        preload/running-torque preload/no-yield-strength preload/countersunk
+        preload/never-for-conductance preload/no-torque-card preload/slip-and-fatigue
+        preload/insert preload/settling-small-screw preload/no-bearing-limit preload/galling
+        preload/negative-service-force
+        pressure/cone-beyond-edge pressure/cone-range pressure/overlap pressure/flatness-ignored
+        pressure/thin-plate-wide-pitch pressure/tapped-cone pressure/unequal-seats pressure/cell
+        pressure/large-hole pressure/conical-seat
+        conductance/law-range conductance/beyond-hardness conductance/slope-range
+        conductance/light-load conductance/finish-not-measured filler/creep filler/outside-table
+        filler/paste-range measured/outside-range
+        material/room-temperature-data material/above-range material/galvanic material/brittle
+        service/air-flatters-vacuum service/vacuum-materials service/isolation-and-bonding
+        service/hot-surface service/defer service/spreading-limited resistance/cell
+        resistance/edge-sink resistance/bypass
+        law/elastic-plastic law/plastic law/elastic law/gas-gap law/radiation law/paste law/plating
+        law/torque law/nut-factor law/strength-use law/settling law/cone law/ring-network law/cell
+        law/lower-bound law/planes planes";
+
+    #[test]
+    fn every_code_is_explained() {
+        let missing: Vec<&str> = CODES
+            .split_whitespace()
+            .filter(|code| entry(code).is_none())
+            .collect();
+        assert!(missing.is_empty(), "{missing:?}");
+        assert_eq!(entry("planes"), entry("law/planes"));
+        assert_eq!(entry("no/such-code"), None);
+    }
+
+    #[test]
+    fn each_code_stands_once() {
+        for (at, one) in entries().iter().enumerate() {
+            let again = entries()[at + 1..]
+                .iter()
+                .any(|other| other.code == one.code);
+            assert!(!again, "{}", one.code);
+        }
+    }
+
+    #[test]
+    fn entries_are_whole_sentences() {
+        for entry in entries() {
+            let code = entry.code;
+            assert!(
+                !entry.title.is_empty() && !entry.title.ends_with('.'),
+                "{code}"
+            );
+            for text in [entry.meaning, entry.remedy] {
+                assert!(text.len() > 20 && text.ends_with('.'), "{code}: {text}");
+                assert!(
+                    !text.contains("  ") && !text.contains('\n'),
+                    "{code}: {text}"
+                );
+            }
+        }
+    }
+
+    #[test]
+    fn laws_alone_carry_equation_range_and_source() {
+        for entry in entries() {
+            assert_eq!(
+                entry.law.is_some(),
+                entry.kind == Kind::Law,
+                "{}",
+                entry.code
+            );
+            assert_eq!(
+                entry.code.starts_with("law/"),
+                entry.kind == Kind::Law,
+                "{}",
+                entry.code
+            );
+            if let Some(law) = entry.law {
+                assert!(
+                    [law.equation, law.range, law.source]
+                        .iter()
+                        .all(|text| !text.is_empty()),
+                    "{}",
+                    entry.code
+                );
+            }
+        }
+    }
+
+    #[test]
+    fn cautions_that_can_hurt_defer_to_code_and_engineer() {
+        for code in [
+            "preload/over-yield",
+            "preload/over-proof",
+            "preload/no-torque-card",
+            "preload/slip-and-fatigue",
+            "service/defer",
+            "service/isolation-and-bonding",
+            "service/hot-surface",
+            "service/vacuum-materials",
+        ] {
+            let entry = entry(code).unwrap();
+            assert_eq!(entry.kind, Kind::Caution(Gravity::Grave), "{code}");
+            assert!(
+                ["code", "engineer", "rules"]
+                    .iter()
+                    .any(|word| entry.remedy.contains(word)),
+                "{code}: {}",
+                entry.remedy
+            );
+        }
+    }
+
+    #[test]
+    fn grave_cautions_come_first_and_the_rest_keep_their_order() {
+        let caution = |code| Caution {
+            code,
+            text: String::new(),
+        };
+        let mut cautions = [
+            caution("pressure/cell"),
+            caution("filler/creep"),
+            caution("pressure/overlap"),
+            caution("preload/over-yield"),
+        ];
+        sort_by_gravity(&mut cautions);
+        let codes = cautions.map(|caution| caution.code);
+        assert_eq!(
+            codes,
+            [
+                "preload/over-yield",
+                "filler/creep",
+                "pressure/overlap",
+                "pressure/cell"
+            ]
+        );
+    }
+
+    #[test]
+    fn an_unknown_code_is_never_buried() {
+        assert_eq!(gravity("no/such-code"), Gravity::Grave);
+    }
 }

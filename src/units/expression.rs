@@ -67,7 +67,11 @@ const DEEPEST: usize = 4;
 
 /// Reads a unit.
 pub(super) fn evaluate(text: &str, reading: Reading) -> Result<Measure, UnitError> {
-    let tokens = tokens(text)?;
+    let mut tokens = tokens(text)?;
+    if tokens.first() == Some(&Token::Slash) {
+        // `/K` is the engineer's `1/K`.
+        tokens.insert(0, Token::One);
+    }
     let mut reader = Reader {
         tokens: &tokens,
         at: 0,

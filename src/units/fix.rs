@@ -99,7 +99,7 @@ pub(super) fn unreadable(text: &str, quantity: Quantity, error: &UnitError) -> U
     let (message, help) = match error {
         UnitError::Unknown(word) => (
             format!("{} is not a unit; {expected} is expected", quoted(word)),
-            other_case(text, word, quantity).unwrap_or_else(|| such_as(quantity)),
+            meant(text, word, quantity).unwrap_or_else(|| such_as(quantity)),
         ),
         UnitError::Ambiguous => (
             format!("{found} can be read two ways: is the last factor above or below the bar?"),
@@ -142,33 +142,68 @@ pub(super) fn unreadable(text: &str, quantity: Quantity, error: &UnitError) -> U
     UnitFault::new(message, help)
 }
 
-/// The help for a slip of upper and lower case, such as `mpa`, or for a scale without its degree sign.
-fn other_case(text: &str, word: &str, quantity: Quantity) -> Option<String> {
+/// Words people write for a symbol, in lower case and without a plural `s`.
+const SPELT_OUT: &[(&str, &str)] = &[
+    ("micron", "µm"),
+    ("micrometer", "µm"),
+    ("micrometre", "µm"),
+    ("millimeter", "mm"),
+    ("millimetre", "mm"),
+    ("centimeter", "cm"),
+    ("centimetre", "cm"),
+    ("meter", "m"),
+    ("metre", "m"),
+    ("inche", "in"),
+    ("feet", "ft"),
+    ("foot", "ft"),
+    ("microinch", "µin"),
+    ("lb", "lb"),
+    ("pound", "lbf"),
+    ("newton", "N"),
+    ("kilonewton", "kN"),
+    ("kp", "kgf"),
+    ("pascal", "Pa"),
+    ("psia", "psi"),
+    ("bara", "bar"),
+    ("watt", "W"),
+    ("kelvin", "K"),
+    ("celsiu", "°C"),
+    ("fahrenheit", "°F"),
+    ("degree", "°"),
+    ("percent", "%"),
+];
+
+/// The help for a word that is nearly a symbol: its spelling in full, a scale without its degree
+/// sign, or a slip of upper and lower case such as `mpa`.
+fn meant(text: &str, word: &str, quantity: Quantity) -> Option<String> {
     let wanted = Dimension::of(quantity);
-    let meant = match word {
-        "C" | "F" | "c" | "f" if wanted == Dimension::of(Quantity::Temperature) => {
-            vec![if word.eq_ignore_ascii_case("c") {
-                "°C"
-            } else {
-                "°F"
-            }]
-        }
-        _ => {
-            let mut meant: Vec<_> = symbols::same_but_for_case(word).collect();
-            // What measures the right thing comes first; `mpa` for a hardness is `MPa`, and the
-            // larger of `MPa` and `mPa` is the likelier slip.
-            meant.sort_by(|(_, one), (_, other)| {
-                (other.1 == wanted)
-                    .cmp(&(one.1 == wanted))
-                    .then(other.0.total_cmp(&one.0))
-            });
-            meant.into_iter().map(|(symbol, _)| symbol).collect()
-        }
-    };
-    let first = meant.first()?;
+    let plain = word.to_lowercase();
+    let plain = plain.strip_suffix('s').unwrap_or(&plain);
+    if plain == "barg" || plain == "psig" {
+        return Some("write the absolute pressure: gauge pressure plus 1.013 bar".to_owned());
+    }
+    let scale = matches!(word, "C" | "F" | "c" | "f");
+    if scale && wanted == Dimension::of(Quantity::Temperature) {
+        let letter = word.to_uppercase();
+        let number = text.trim_end_matches(word).trim_end().trim_end_matches('°');
+        return Some(format!(
+            "write {}",
+            quoted(&format!("{} °{letter}", number.trim_end()))
+        ));
+    }
+    let spelt = SPELT_OUT.iter().find(|(spelt, _)| *spelt == plain);
+    if let Some((_, symbol)) = spelt.filter(|(_, symbol)| *symbol != word) {
+        return Some(format!("write {}", quoted(&text.replacen(word, symbol, 1))));
+    }
+    // What measures the right thing comes first; of `MPa` and `mPa` the larger is the likelier slip.
+    let (symbol, _) = symbols::same_but_for_case(word).min_by(|(_, one), (_, other)| {
+        (other.1 == wanted)
+            .cmp(&(one.1 == wanted))
+            .then(other.0.total_cmp(&one.0))
+    })?;
     Some(format!(
-        "upper and lower case count: write `{}`",
-        quoted(&text.replacen(word, first, 1)).trim_matches('`')
+        "upper and lower case count: write {}",
+        quoted(&text.replacen(word, symbol, 1))
     ))
 }
 

@@ -132,7 +132,7 @@ fn spaced(text: &str, rest: &str, quantity: Quantity) -> Result<(), UnitFault> {
 
 fn one_value(found: &str, quantity: Quantity) -> UnitFault {
     UnitFault::new(
-        format!("{found} is a range; one value is expected"),
+        format!("{found} holds more than one number; one value is expected"),
         format!("write one value such as `{}`", quantity.example()),
     )
 }
@@ -161,6 +161,12 @@ fn no_number(text: &str, quantity: Quantity) -> UnitFault {
         return UnitFault::new(
             format!("{found} is a thread, and a length is expected"),
             format!("write `{size} mm` for its nominal diameter"),
+        );
+    }
+    if let Some(diameter) = text.strip_prefix(['Ø', 'ø', '⌀']) {
+        return UnitFault::new(
+            format!("{found} carries a diameter sign"),
+            format!("write {}", fix::quoted(diameter.trim())),
         );
     }
     UnitFault::new(

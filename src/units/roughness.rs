@@ -19,10 +19,9 @@ pub const RMS_OVER_MEAN: f64 = 1.253_314_137_315_5;
 /// Source: workshop practice, from memory; no standard fixes the ratio.
 pub const RZ_OVER_RA: f64 = 5.3;
 
-/// Roughness grades of ISO 1302 as Ra, m: N1 to N12. From memory.
+/// Roughness grades of ISO 1302 as Ra, µm: N1 to N12. From memory.
 const GRADES: [f64; 12] = [
-    0.025e-6, 0.05e-6, 0.1e-6, 0.2e-6, 0.4e-6, 0.8e-6, 1.6e-6, 3.2e-6, 6.3e-6, 12.5e-6, 25e-6,
-    50e-6,
+    0.025, 0.05, 0.1, 0.2, 0.4, 0.8, 1.6, 3.2, 6.3, 12.5, 25.0, 50.0,
 ];
 
 /// Largest Rq that is read, m: four times the roughest grade. A larger one is a slip of the unit.
@@ -54,10 +53,22 @@ pub fn parse_roughness(text: &str) -> Result<Roughness, UnitFault> {
     if let Some(grade) = grade(text) {
         return grade;
     }
+    if text.parse::<f64>().is_ok() {
+        return Err(bare(text));
+    }
     let Some((parameter, value)) = parameter(text) else {
         return Err(nameless(text));
     };
-    if value.is_empty() || value.parse::<f64>().is_ok() {
+    if value.is_empty() {
+        return Err(UnitFault::new(
+            format!(
+                "{} has no value; a roughness is expected",
+                fix::quoted(text)
+            ),
+            "write it such as `Ra 0.8 µm` or `Ra 32 µin`".to_owned(),
+        ));
+    }
+    if value.parse::<f64>().is_ok() {
         return Err(UnitFault::new(
             format!("{} has no unit; a roughness is expected", fix::quoted(text)),
             "write it such as `Ra 0.8 µm` or `Ra 32 µin`".to_owned(),
@@ -120,11 +131,10 @@ fn grade(text: &str) -> Option<Result<Roughness, UnitFault>> {
         .and_then(|number| GRADES.get(number.checked_sub(1)?));
     Some(match known {
         Some(ra) => Ok(Roughness {
-            rq: ra * RMS_OVER_MEAN,
+            rq: ra * 1e-6 * RMS_OVER_MEAN,
             assumed: Some(format!(
-                "N{number} is Ra {:.3} µm (grades of ISO 1302, from memory); Rq = 1.2533 Ra, \
-                 heights taken as Gaussian",
-                ra * 1e6
+                "N{number} is Ra {ra} µm (grades of ISO 1302, from memory); Rq = 1.2533 Ra, \
+                 heights taken as Gaussian"
             )),
         }),
         None => Err(UnitFault::new(
@@ -159,6 +169,15 @@ fn parameter(text: &str) -> Option<(Parameter, &str)> {
             .filter(|back| back.eq_ignore_ascii_case(name));
         back.map(|_| (parameter, text[..start].trim()))
     })
+}
+
+/// A roughness without a unit.
+fn bare(text: &str) -> UnitFault {
+    UnitFault {
+        code: "unit/bare-number",
+        message: format!("{} has no unit; a roughness is expected", fix::quoted(text)),
+        help: Some("write it such as `Ra 0.8 µm` or `Ra 32 µin`".to_owned()),
+    }
 }
 
 /// A roughness that does not say which parameter it is.
@@ -251,6 +270,8 @@ mod tests {
         for (text, message, help) in [
             ("0.8 µm", "does not say which roughness", "`Ra 0.8 µm`"),
             ("Ra 0.8", "has no unit", "`Ra 0.8 µm`"),
+            ("0.8", "has no unit", "`Ra 0.8 µm`"),
+            ("Ra", "has no value", "`Ra 0.8 µm`"),
             ("N13", "N1 to N12", "`N7`"),
             ("Rt 5 µm", "Ra, Rq and Rz", "`Ra 0.8 µm`"),
             ("Ra 0.8 mm", "rougher than any", "micrometres"),

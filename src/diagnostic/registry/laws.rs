@@ -1,0 +1,339 @@
+//! The laws and conventions behind the results.
+
+use crate::diagnostic::registry::{Entry, Law};
+
+pub(super) const ENTRIES: &[Entry] = &[
+    Law {
+        equation: "contact: G = ∫ h dA;   node to node: R = (T̄₁ − T̄₂)/Q;   \
+                   added by the joint: R = R(path) − R(path, perfect contact);   \
+                   source to sink: R = (T̄_source − T̄_sink)/Q",
+        range: "all results belong to the stated source and sink; spreading-limited values do not \
+                scale with the number of bolts",
+        source: "definitions of this program",
+    }
+    .entry(
+        "law/planes",
+        "Which result enters which model",
+        [
+            "Four numbers are called joint resistance, and they differ a hundredfold. `contact` is \
+             the sum of local conductance with both faces at one temperature each, an upper bound \
+             of conductance: 382 W/K for four M5 at 5 kN between two 80 × 80 × 5 mm aluminium plates. \
+             `node to node` stands between the mean temperatures of the two whole plates. `added by \
+             the joint` is what the joint costs against perfect contact: 0.278 K/W for the same \
+             plates in vacuum. `source to sink` is the whole path from heated zone to sink surface.",
+            "Meshed model with its own plates: give its faces the local h, or `contact` on the area \
+             that touches; it makes its own spreading. Thermal network with one node per plate: \
+             `node to node`. Requirement of kelvins at watts: `source to sink`, at the unfavourable \
+             end. `added by the joint` tells what a better joint could gain; put into a meshed \
+             model it counts the spreading twice. For a hot case take low conductance, for heat \
+             leaking into the cold or an isolating mount take high.",
+        ],
+    ),
+    Law {
+        equation: "T = T_run + F (P/2π + 0.577 μ_t d₂ + μ_h D_m/2)",
+        range: "60° threads, bolt elastic; the exact helix gives 0.3 % (μ 0.08) to 0.9 % (μ 0.30) more \
+                torque",
+        source: "VDI 2230; checked against its printed tables of 2001 (fine thread: force within \
+                 0.34 %, torque within 0.84 %)",
+    }
+    .entry(
+        "law/torque",
+        "Torque to clamp force",
+        [
+            "The torque lifts the load along the thread (pitch P), rubs in the thread (pitch diameter \
+             d₂) and under the turned head (mean diameter D_m). Running torque of a locking feature \
+             comes first and clamps nothing.",
+            "State friction of thread and head with a range; the class of VDI 2230 is the \
+             fallback.",
+        ],
+    ),
+    Law {
+        equation: "F = (T − T_run) / (K d)",
+        range: "the lubricant, plating and size that K was measured with; K falls as torque rises",
+        source: "textbook form; at equal friction 0.15 it returns K = 0.194 to 0.202 (M6 to M20, 1/4-20)",
+    }
+    .entry(
+        "law/nut-factor",
+        "Nut factor",
+        [
+            "One number K stands for pitch and both frictions; d is the nominal diameter. Published \
+             values run from 0.10 (oiled) to 0.50 (stainless on stainless, dry), and 0.20 is what people \
+             take when they do not know.",
+            "Use it when K was measured on the stack, with its range. Friction coefficients say \
+             more.",
+        ],
+    ),
+    Law {
+        equation: "σ_eq = √(σ² + 3 τ²),   σ = F/A₀,   τ = 12 M_t/(π d₀³) (thread fully plastic in torsion)",
+        range: "tightening alone; stress diameter d₀ = d − 0.9382 P (metric), D − 0.9743 P (inch)",
+        source: "VDI 2230, editions from 2001 on (plastic torsion; its tables are reproduced within \
+                 1 %); older tables reckon with elastic torsion and lie 5 to 10 % lower",
+    }
+    .entry(
+        "law/strength-use",
+        "How much of the bolt's strength tightening uses",
+        [
+            "The equivalent stress of tension and of the torque that the thread takes up, running \
+             torque included, over the yield strength. The high value stands at lowest friction and \
+             upper torque tolerance.",
+            "Keep the high value below 0.9 for tightening by torque. External loads come on top and \
+             are not in it.",
+        ],
+    ),
+    Law {
+        equation: "F_Z = f_Z / (δ_S + δ_P)",
+        range: "pressures below the limit of every seat; M4 and larger; all-metal joints",
+        source: "VDI 2230, table of guide values for f_Z and cone of δ_P, from memory",
+    }
+    .entry(
+        "law/settling",
+        "Clamp force lost to settling",
+        [
+            "Roughness in thread, seats and interfaces flattens by f_Z, 8 to 11 µm for two plates. The \
+             loss is that times the stiffness of the joint: long slender bolts lose least. δ_S and δ_P \
+             are the resiliences of bolt and plates.",
+            "Acts in the low force by default and in the nominal one when `[losses]` asks for it. \
+             Measured values replace it.",
+        ],
+    ),
+    Law {
+        equation: "c = b + t_e tan φ,   p = p₀ (1 − x^α)^β,   x = (r − a)/(c − a),   ∫ p dA = F",
+        range: "t_e/b 0.15 to 4, b/a 1.25 to 2.6, thickness ratio up to 6, ratio of moduli 1/3 to 3; flat \
+                faces, uniform head pressure, no friction between the faces",
+        source: "fitted to 43 axisymmetric finite-element solutions made for this program: c within \
+                 4 %, ring sum within 0.6 %",
+    }
+    .entry(
+        "law/cone",
+        "How far the clamp force spreads",
+        [
+            "Beneath a head of radius b the pressure between the plates reaches a radius c and falls \
+             to zero there. No fixed angle is right: from head edge to contact edge it is 16 to 24° \
+             up to a thickness of 0.8 b, 32° at 2 b and 39° at 4 b. The 45° of old texts belongs to \
+             glued plates. a is the hole radius, t_e the effective thickness of unequal plates.",
+            "A half-angle of your own or the angle of VDI 2230 can be chosen for comparison.",
+        ],
+    ),
+    Law {
+        equation: "h σ/(k_s m) = √f exp(−λ²/2) / (2√(2π) (1 − √(½ f erfc(λ/√2)))^1.5),   \
+                   λ = √2 erfc⁻¹(2P/(f H_ep)),   H_ep = 2.76 S_f/√(1 + (6.5/ε)²),   ε = 1.67 E′ m/S_f",
+        range: "any pressure up to half the hardness; flat rough faces, first loading",
+        source: "Sridhar & Yovanovich 1996, from memory; the exact form and its published fit agree \
+                 within 4 % for ε 0.5 to 1000",
+    }
+    .entry(
+        "law/elastic-plastic",
+        "Solid spots, elastic to plastic",
+        [
+            "Smooth, hard faces touch elastically, rough soft ones plastically, and many sets lie \
+             between. This law passes from one to the other without a step, so it is the default. \
+             The flow stress S_f of the surface layer is H_c/2.76 with the same microhardness as \
+             in the plastic law, not the yield strength of the catalogue.",
+            "Keep it unless a paper or a requirement names another law.",
+        ],
+    ),
+    Law {
+        equation: "h = 1.25 k_s (m/σ) (P/H_c)^0.95;   exact: λ = √2 erfc⁻¹(2P/H_c), \
+                   h σ/(k_s m) = exp(−λ²/2) / (2√(2π) (1 − √(P/H_c))^1.5)",
+        range: "fit: P/H_c 10⁻⁶ to 0.02, within 1.4 % of the exact integral; the integral is used at any \
+                pressure",
+        source: "Yovanovich 1982; formula read in the Mechanical Engineers' Handbook, 3rd ed., vol. 4, \
+                 pp. 374-375; its range and the exact form from memory",
+    }
+    .entry(
+        "law/plastic",
+        "Solid spots, plastic",
+        [
+            "The peaks of the rougher face sink into the softer one until the true area carries the \
+             load at the microhardness H_c. k_s is the harmonic mean conductivity; σ and m are \
+             roughness and slope of both faces in quadrature.",
+            "The classic choice for blasted, ground and milled metal.",
+        ],
+    ),
+    Law {
+        equation: "h = 1.25 k_s (m/σ) (P/H_c)^0.95 at any pressure",
+        range: "checked for P/H_c up to 0.02; 4, 7 and 11 % low at 0.05, 0.08 and 0.11",
+        source: "Yovanovich 1982, as for law/plastic",
+    }
+    .entry(
+        "law/plastic-power",
+        "Solid spots, plain power law",
+        [
+            "The published fit of the plastic law, without the exact integral at high pressure.",
+            "For comparison with papers and other reckonings alone.",
+        ],
+    ),
+    Law {
+        equation: "h = 1.55 k_s (m/σ) (P/H_e)^0.94,   H_e = E′ m/√2;   exact: λ = √2 erfc⁻¹(4P/H_e), \
+                   h σ/(k_s m) = exp(−λ²/2) / (4√π (1 − √(P/H_e))^1.5)",
+        range: "fit: P/H_e 10⁻⁵ to 10⁻², within 2 % of the exact integral",
+        source: "Mikic 1974, from memory; fit and exact form agree",
+    }
+    .entry(
+        "law/elastic",
+        "Solid spots, elastic",
+        [
+            "The peaks flatten elastically; hardness does not enter, but the moduli of both faces \
+             do: 1/E′ = (1 − ν₁²)/E₁ + (1 − ν₂²)/E₂. Fits lapped hard faces and contacts that have been \
+             loaded before.",
+            "Use it to see how much the mode of deformation matters.",
+        ],
+    ),
+    Law {
+        equation: "m = 0.125 σ^0.402,   σ in µm;   σ = √(σ₁² + σ₂²),   m = √(m₁² + m₂²)",
+        range: "Rq 0.216 to 9.6 µm (range from memory)",
+        source: "correlation of published profiles, formula read second hand; other rules differ by \
+                 1.9 to 2.8",
+    }
+    .entry(
+        "law/slope",
+        "Slope of the asperities from roughness",
+        [
+            "Conductance is proportional to slope, which drawings never state. The rule guesses it \
+             from Rq, face by face, with a factor 1.4 either way (one standard deviation, a judgement).",
+            "State a measured slope; it also depends on the sampling interval of the instrument.",
+        ],
+    ),
+    Law {
+        equation: "P/H_c = [P / (c₁ (1.62 σ′/m)^c₂)]^(1/(1 + 0.071 c₂)),   σ′ in µm",
+        range: "materials with measured c₁ and c₂; others use 1.08 HV times a factor 1.0 to 1.6",
+        source: "form read in a journal paper of 2004; exponent and the table of c₁, c₂ from memory \
+                 (Hegazy 1985)",
+    }
+    .entry(
+        "law/microhardness",
+        "Hardness at the size of a contact spot",
+        [
+            "Machining hardens the outermost microns, and spots are so small that they meet this \
+             layer. Measured Vickers microhardness c₁ d^c₂ is taken at the size of the spots.",
+            "For aluminium and annealed copper no coefficients were found: the bulk Vickers value \
+             is used and its factor enters the spread.",
+        ],
+    ),
+    Law {
+        equation: "h_g = k_g/(Y + M) to first order;   Y = √2 σ erfc⁻¹(2P/H);   \
+                   M = ((2−α₁)/α₁ + (2−α₂)/α₂) · 2γ/((1+γ) Pr) · Λ",
+        range: "any gas pressure down to vacuum; where faces part, the gap is their separation plus Y; at \
+                zero load Y is that of P/H = 10⁻⁶ (an assumption)",
+        source: "simple form and M read in published work; integral over the heights after Yovanovich, \
+                 DeVaal & Hegazy 1982, from memory",
+    }
+    .entry(
+        "law/gas-gap",
+        "Gas in the gaps",
+        [
+            "Gas conducts over the mean distance Y of the rough faces, lengthened by M because \
+             molecules exchange heat badly with a wall (accommodation α) and fly a free path Λ, which \
+             grows as 1/p. Below about 100 Pa conductance is proportional to pressure.",
+            "Between the bolts this is most of the heat in air: see `service/air-flatters-vacuum`.",
+        ],
+    ),
+    Law {
+        equation: "h_r = 4 ε σ_B T³,   1/ε = 1/ε₁ + 1/ε₂ − 1",
+        range: "grey diffuse faces close together, small temperature drop",
+        source: "textbook form, read in two places; 6.124 W/(m²·K) for black faces at 300 K",
+    }
+    .entry(
+        "law/radiation",
+        "Radiation across the gap",
+        [
+            "Where faces part in vacuum they still radiate to each other. Bare metal of emissivity 0.1 \
+             makes 0.3 W/(m²·K) at 300 K: next to nothing beside a contact, but all there is without \
+             one, and strong above 600 K.",
+            "State emissivities for black or anodised faces.",
+        ],
+    ),
+    Law {
+        equation: "h = k/Y beside the solid spots",
+        range: "liquids without particles that fill the gaps",
+        source: "gap conductance with M = 0, from memory",
+    }
+    .entry(
+        "law/fluid",
+        "Oil or unfilled grease",
+        [
+            "The liquid replaces the gas in the gaps of the rough faces and conducts six to eight times \
+             better; the metal spots remain.",
+            "For greases with particles use a paste: particles hold the faces apart.",
+        ],
+    ),
+    Law {
+        equation: "BLT = 1.31·10⁻⁴ m (τ_y/P)^0.166,   R″ = BLT/k + (σ₁ + σ₂)/(2k)",
+        range: "0.1 to 1 MPa; not thinner than the largest particles, not thicker than applied",
+        source: "Prasher 2001 and 2002, constants from memory",
+    }
+    .entry(
+        "law/paste",
+        "Paste with particles",
+        [
+            "A paste yields at τ_y, so its bond line falls slowly with pressure: 42 µm at 100 kPa and \
+             28 µm at 1 MPa for 100 Pa. Between the bolts it stays as thick as applied, or as the gap.",
+            "Apply thinly. With paste, more torque can make the joint worse: the gap between the \
+             bolts opens with force.",
+        ],
+    ),
+    Law {
+        equation: "t/d < 1: H′ = H_s (1 − t/d) + 1.81 H_l t/d;   to 4.90: H′ = 1.81 H_l − 0.21 H_l (t/d − 1);   \
+                   above: H′ = H_l",
+        range: "soft metal on a harder base; t layer thickness, d depth of indentation",
+        source: "Antonetti & Yovanovich 1985, rule from memory; 61 measured points of silver on nickel \
+                 scatter by 12.6 % RMS",
+    }
+    .entry(
+        "law/plating",
+        "Platings and films",
+        [
+            "A soft plating lets the faces sink into each other; a thick one also conducts for \
+             itself. Vapour-deposited indium of 2 to 3 µm on aluminium raised conductance eightfold, \
+             lead of about 2 µm fivefold, most at low pressure. A hard or insulating film adds its t/k \
+             in series and its own hardness to the contact.",
+            "Watch vacuum (cadmium, zinc, tin) and corrosion; more than a few microns gain nothing.",
+        ],
+    ),
+    Law {
+        equation: "q = (T₁ − T₂) / (1/h + t₁/3k₁ + t₂/3k₂) from ring to ring, radial links 2π k t / ln(r₊/r₋)",
+        range: "one bolt in round plates; upper bound of resistance for the given pressure field, up \
+                to the ring error (10⁻⁴ at 100 rings)",
+        source: "complementary energy: the flux behind it is admissible; measured +0.5, +3 and +7 % \
+                 (median) at Biot numbers 0.1, 1 and 10",
+    }
+    .entry(
+        "law/ring-network",
+        "Rings between two round plates",
+        [
+            "Both plates are cut into rings; each ring pair exchanges heat across the joint and with \
+             its neighbours. Because every such flow is a possible one, the true resistance cannot be \
+             higher than this.",
+            "Read it with `law/lower-bound`: the truth lies between, for the field used.",
+        ],
+    ),
+    Law {
+        equation: "R ≥ R_1D + 1/G",
+        range: "isothermal or uniformly heated outer faces; G holds contact, gas, radiation and shank",
+        source: "Rayleigh's monotonicity: forcing a surface to one temperature can only lower resistance",
+    }
+    .entry(
+        "law/lower-bound",
+        "Lower bound of the resistance",
+        [
+            "If both faying faces had one temperature each, no heat would need to spread, and the \
+             path would be the plates straight through (R_1D) and the ring sum G in series.",
+            "Bounds hold for the pressure field that was used; they do not hold its own error.",
+        ],
+    ),
+    Law {
+        equation: "1/R = Σ 1/R_i,   each bolt a round joint of the area of its cell",
+        range: "even patterns under even heating; a comparison and not a bound",
+        source: "construction of this program; plate networks of this kind met reference solutions \
+                 within about 5 %",
+    }
+    .entry(
+        "law/cell",
+        "Many bolts as round cells side by side",
+        [
+            "Every bolt serves the part of the plates nearest to it. The part is taken as a disc of \
+             equal area, solved as one round joint, and the discs are put side by side.",
+            "Good for comparing variants; see `resistance/cell` for what it leaves out.",
+        ],
+    ),
+];

@@ -1,0 +1,115 @@
+//! Cautions on the pressure between the faces.
+
+use crate::diagnostic::registry::{
+    Entry,
+    Gravity::{Note, Range},
+};
+
+pub(super) const ENTRIES: &[Entry] = &[
+    Range.entry(
+        "pressure/cone-beyond-edge",
+        "The pressure cone reaches the edge",
+        [
+            "The contact would spread beyond the edge of a plate or into another hole. The field is \
+             cut there and scaled up so that it still carries the whole clamp force. Real plates \
+             then tilt and press hardest on the inner side.",
+            "Trust the sum more than the picture; near an edge expect the local pressure to be off \
+             by a quarter. Move the bolt inwards by about the radius of contact.",
+        ],
+    ),
+    Range.entry(
+        "pressure/cone-range",
+        "The cone is used outside the plates it was fitted to",
+        [
+            "The fitted contact law covers thickness 0.15 to 4 head radii, head radius 1.25 to 2.6 \
+             hole radii, a thickness ratio up to 6 and a ratio of moduli of 1/3 to 3. There it meets the \
+             reference solutions within 4 % of contact radius. For a thick soft plate beneath a \
+             thin stiff one the radius is up to 8.5 % low.",
+            "Widen the band by hand, or state a half-angle of your own and see what it changes.",
+        ],
+    ),
+    Range.entry(
+        "pressure/overlap",
+        "The contacts of neighbouring bolts overlap",
+        [
+            "The fields of neighbours are added. In truth each bolt also stiffens the other's \
+             surroundings: for M5 on 5 + 5 mm the sum differs from the reference by 7 % at 26 mm \
+             pitch and 14 % at 14 mm, where 25 MPa stand midway and the sum has none.",
+            "Fine for the total force, weak for the shape. Treat closely pitched rows with a wider \
+             band.",
+        ],
+    ),
+    Range.entry(
+        "pressure/flatness-ignored",
+        "Out-of-flatness is not in the pressure field",
+        [
+            "The cone assumes flat faces. Bowed ones touch first at the crown or at the rim, and \
+             part elsewhere. On the six-bolt reference a bow of 30 µm changed the gap by a fifth, \
+             the resistance by 1 % in vacuum and 3 % in air; with thick plates or weak bolts it can \
+             be far more: textbook tables of real faces suggest a factor 3 to 20 (a judgement).",
+            "Keep flatness below the elastic deflection of the plates between bolts, pull bowed \
+             bases flat from the middle, or fill the gap.",
+        ],
+    ),
+    Range.entry(
+        "pressure/thin-plate-wide-pitch",
+        "Thin plates, bolts far apart",
+        [
+            "Contact reaches only a little beyond the head: 6.5 mm from the axis of an M5 on 5 + 5 mm. \
+             Between bolts far apart the plates stand microns apart, and heat must run sideways in \
+             thin metal. The spreading in the plates then rules the result, not the contact.",
+            "Look at `source to sink` and not at `contact`. Thicker plates, closer pitch, bolts under \
+             the source or a filler help; torque does not.",
+        ],
+    ),
+    Range.entry(
+        "pressure/tapped-cone",
+        "Tapped hole or insert instead of a nut",
+        [
+            "A thread pulls on its plate from within, near the faying face, where a nut presses from \
+             behind. On the six-bolt reference this changed the central gap by -35 %, and the \
+             resistance by +4.8 % in vacuum and -4.7 % in air. The cone knows the thread by a rule \
+             alone.",
+            "Count 5 % of resistance as unknown.",
+        ],
+    ),
+    Range.entry(
+        "pressure/unequal-seats",
+        "Head and nut press on different annuli",
+        [
+            "The fitted cone was made for equal seats on both sides. Unequal ones are replaced by \
+             one seat between them; the contact lies nearer to the smaller one.",
+            "Equal washers on both sides remove the doubt.",
+        ],
+    ),
+    Note.entry(
+        "pressure/cell",
+        "Each bolt owns a cell of the plates",
+        [
+            "Every point of the faying faces belongs to its nearest bolt. A bolt's pressure is that \
+             of a round plate of its own, cut at the border of the cell.",
+            "Good while contacts stay apart. For rows so close that contacts meet, see \
+             `pressure/overlap`.",
+        ],
+    ),
+    Range.entry(
+        "pressure/large-hole",
+        "The hole is far larger than ISO 273",
+        [
+            "A wide hole leaves the head only a narrow ring to press on: the pressure rises, the \
+             contact moves outwards, and the head may dish the plate. ISO 273 gives 5.3, 5.5 and \
+             5.8 mm for M5 (fine, medium, coarse).",
+            "Use the medium hole, or a thick washer with a matching inner diameter.",
+        ],
+    ),
+    Range.entry(
+        "pressure/conical-seat",
+        "The head sits in a cone",
+        [
+            "A countersunk head spreads its force over the depth of the plate and wedges the hole \
+             open. The laws for flat annuli are used with the largest diameter of the head, which \
+             is an assumption without a reference solution behind it.",
+            "Treat the contact radius as uncertain by about a head's height (a judgement); prefer a flat head.",
+        ],
+    ),
+];

@@ -1,0 +1,113 @@
+//! Cautions on the use of the joint and of the numbers.
+
+use crate::diagnostic::registry::{
+    Entry,
+    Gravity::{Grave, Note, Range},
+};
+
+pub(super) const ENTRIES: &[Entry] = &[
+    Grave.entry(
+        "service/air-flatters-vacuum",
+        "A result in air says little about vacuum",
+        [
+            "In air most heat crosses between the bolts through a few microns of gas. Without it the \
+             reference joint (four M5 on 80 × 80 × 5 mm aluminium) adds 0.278 instead of 0.074 K/W, \
+             almost four times as much. A bench test in air can hide a joint that fails in orbit or \
+             in a cryostat; leak and partial pressure matter down to about 1 Pa.",
+            "Estimate and test in the medium of service. Below 100 Pa gas conductance falls in \
+             proportion to pressure.",
+        ],
+    ),
+    Grave.entry(
+        "service/vacuum-materials",
+        "A material that is at odds with vacuum",
+        [
+            "Cadmium and zinc evaporate in vacuum when warm (noticeably from about 75 and 130 °C, \
+             from memory) and coat cold optics and insulators. Pure tin, zinc and cadmium grow \
+             whiskers that short circuits. Silicone oil creeps and outgasses, and contaminates \
+             optics, contacts and bonding faces.",
+            "Choose platings, lubricants and fillers released for your vacuum or space programme \
+             (outgassing by ASTM E595 or the ECSS equivalent); the contamination engineer decides.",
+        ],
+    ),
+    Grave.entry(
+        "service/isolation-and-bonding",
+        "Electrical insulation and protective bonding are not checked",
+        [
+            "A thermal joint is often an electrical one. Anodised faces, pads and pastes insulate \
+             until a bolt, a burr or a scratch bridges them; an intended earth path may be \
+             broken by the very same layers. Neither creepage, breakdown nor bonding resistance is \
+             computed here.",
+            "Check insulation and protective bonding by the electrical safety code that applies, by \
+             measurement on the assembled joint, with a person qualified for it.",
+        ],
+    ),
+    Grave.entry(
+        "service/hot-surface",
+        "A surface hot or cold enough to hurt",
+        [
+            "Bare metal burns skin at about 65 °C within a second, 55 °C in ten seconds and 51 °C in a \
+             minute (the order of ISO 13732-1, from memory); metal far below freezing tears it. The \
+             temperatures given here are estimates with a band and not limits of safety.",
+            "Guard, mark or insulate what can be touched, by the safety rules that apply to the \
+             product.",
+        ],
+    ),
+    Grave.entry(
+        "service/defer",
+        "An estimate for comparing designs",
+        [
+            "The results compare designs and size margins. They are no release. Pressure equipment, \
+             lifting gear, flight hardware, medical and other safety-critical joints have codes that \
+             fix method, margins and tests.",
+            "Apply the local code. A responsible, qualified engineer decides; measure the real \
+             joint where people or hardware depend on it.",
+        ],
+    ),
+    Note.entry(
+        "service/spreading-limited",
+        "The plates hold back the heat, not the contact",
+        [
+            "`contact` is far smaller a resistance than what the joint adds between source and sink. \
+             On the reference joint the contact alone is 0.0026 K/W, and the joint adds 0.278 K/W in \
+             vacuum, because heat must converge through thin plates to a few square centimetres. \
+             Better faces or more torque cannot help here, and the value per bolt does not scale \
+             with the number of bolts.",
+            "Use `source to sink` for requirements; see `explain planes`. Thicker or better \
+             conducting plates, bolts beneath the source and fillers help.",
+        ],
+    ),
+    Note.entry(
+        "resistance/cell",
+        "Each bolt conducts in a round cell of its own",
+        [
+            "The joint is reckoned as one round joint per bolt, of equal area and equal share of \
+             heat, side by side. That neglects heat flowing between cells and whatever the shape of \
+             the source imposes; for a central source on four bolts in the corners the true \
+             resistance is usually higher.",
+            "Good for even patterns under even heating. Otherwise read it as a comparison between \
+             variants.",
+        ],
+    ),
+    Range.entry(
+        "resistance/edge-sink",
+        "Heat leaves at an edge",
+        [
+            "With a sink at the rim all heat crosses the joint near that side and the plate's own \
+             length is part of the path. Two-dimensional plate models err by 4 to 5 % in vacuum \
+             there, and far bolts carry little.",
+            "Move bolts towards the cooled edge; compare with a mesh when the margin is thin.",
+        ],
+    ),
+    Note.entry(
+        "resistance/bypass",
+        "Heat through the bolts",
+        [
+            "Shank, head and washer conduct beside the faces. With metal contact this changes the \
+             resistance by 0.05 to 0.15 %; with a filler or gas gap and no contact between the \
+             faces by up to 4 %; in a mount meant to isolate it may be most of the heat.",
+            "To isolate, use bolts of titanium or stainless steel with insulating washers and \
+             bushes, and count their contacts.",
+        ],
+    ),
+];
