@@ -16,6 +16,8 @@ mod names;
 mod platings;
 mod raw;
 mod records;
+#[cfg(test)]
+mod refusals;
 mod seats;
 mod threads;
 

@@ -11,7 +11,7 @@ fn off(found: f64, expected: f64) -> f64 {
 }
 
 fn conductivity_fit(name: &str, temperature: f64) -> f64 {
-    catalog::fit(name).unwrap().at(temperature)
+    catalog::fit(name).map_or(f64::NAN, |fit| fit.at(temperature))
 }
 
 #[test]
@@ -84,110 +84,6 @@ fn fits_meet_the_handbook_at_room_temperature() {
     }
 }
 
-#[test]
-fn conductivity_goes_from_the_fit_to_the_handbook_without_a_step() {
-    for material in catalog::materials() {
-        let mut last = None;
-        for temperature in (160..=320).map(f64::from) {
-            let now = material.conductivity_at(temperature).ok();
-            if let (Some(last), Some(now)) = (last, now) {
-                // 36 % of difference blended over 50 K, plus the slope of the fit itself.
-                let off: f64 = off(now, last);
-                assert!(off < 0.015, "{} at {temperature} K: {off}", material.name);
-            }
-            last = now;
-        }
-        assert_eq!(
-            material.conductivity_at(293.15),
-            Ok(material.conductivity.value),
-            "{}",
-            material.name
-        );
-    }
-}
-
-#[test]
-fn contraction_has_the_slope_of_the_room_temperature_expansion() {
-    for material in catalog::materials() {
-        let Some(table) = &material.contraction else {
-            continue;
-        };
-        // Expansion itself falls by some 6 % from 293 K to the middle of the last interval and
-        // sheets differ by as much; PTFE changes its crystal form near 292 K, and one digit of the
-        // table is a third of what is left of Fe-36Ni.
-        let limit = match material.name.as_str() {
-            "PTFE" | "Fe-36Ni" => 1.0,
-            _ => 0.15,
-        };
-        let (temperature, contraction) = table[table.len() - 2];
-        let slope = contraction / (293.0 - temperature);
-        let off = off(slope, material.expansion.value);
-        assert!(off < limit, "{}: {off}", material.name);
-    }
-}
-
-#[test]
-fn contraction_adds_up_and_changes_sign_on_the_way_back() {
-    for name in ["Al 6061-T6", "304", "Cu OFHC", "PTFE"] {
-        let material = catalog::material(name).unwrap();
-        let between = |from, to| material.contraction_between(from, to).unwrap();
-        assert!(between(293.0, 77.0) < 0.0);
-        assert_eq!(between(293.0, 77.0), -between(77.0, 293.0));
-        let parts = between(350.0, 293.0) + between(293.0, 20.0) + between(20.0, 4.0);
-        // The parts are sums of the same few numbers.
-        assert!((parts - between(350.0, 4.0)).abs() < 1e-12, "{name}");
-    }
-    // Published tables of integrated contraction, from memory; 77 K is an entry.
-    let aluminium = catalog::material("Al 6061-T6").unwrap();
-    let found = aluminium.contraction_between(293.0, 77.0).unwrap();
-    assert!((found + 0.00391).abs() < 1e-9);
-}
-
-#[test]
-fn the_cold_is_refused_where_nothing_is_known() {
-    let material = catalog::material("Al 7075-T73").unwrap();
-    let fault = material.conductivity_at(120.0).unwrap_err();
-    assert_eq!(
-        fault.to_string(),
-        "the conductivity of Al 7075-T73 is not known at 120 K: there is no curve k(T) of it, \
-         and room-temperature data do not serve in the cold"
-    );
-    assert!(material.conductivity_at(200.0).is_ok());
-    let material = catalog::material("CuBe2").unwrap();
-    let fault = material.conductivity_at(120.0).unwrap_err();
-    assert_eq!(
-        fault.to_string(),
-        "the conductivity of CuBe2 is not known at 120 K: its curve k(T) runs from 2 to 80 K, \
-         and room-temperature data do not serve in the cold"
-    );
-    let material = catalog::material("Alumina 96 %").unwrap();
-    let fault = material.contraction_between(293.0, 150.0).unwrap_err();
-    assert_eq!(
-        fault.to_string(),
-        "the contraction of Alumina 96 % is not known at 150 K: there is no table ΔL/L(T) of it, \
-         and room-temperature data do not serve in the cold"
-    );
-    assert!(material.contraction_between(293.0, 220.0).is_ok());
-}
-
-#[test]
-fn bolts_follow_the_material_they_are_like() {
-    let bolt = catalog::grade("A2-70", 0.005).unwrap();
-    let like = catalog::material("304").unwrap();
-    assert_eq!(bolt.conductivity_at(77.0), like.conductivity_at(77.0));
-    assert_eq!(
-        bolt.contraction_between(293.0, 77.0),
-        like.contraction_between(293.0, 77.0)
-    );
-    assert_eq!(bolt.conductivity_at(300.0), Ok(16.2));
-    let bolt = catalog::grade("8.8", 0.005).unwrap();
-    let fault = bolt.conductivity_at(77.0).unwrap_err();
-    assert!(fault.to_string().contains("conductivity of 8.8"));
-    // Iron, from memory: 0.190 % to 77 K.
-    let found = bolt.contraction_between(293.0, 77.0).unwrap();
-    assert!((found + 0.0019).abs() < 1e-9);
-}
-
 #[derive(Deserialize)]
 struct StressAreas {
     metric_mm2: BTreeMap<String, f64>,
@@ -195,7 +91,7 @@ struct StressAreas {
 }
 
 fn stress_areas() -> StressAreas {
-    toml::from_str(include_str!("data/stress_areas.toml")).unwrap()
+    toml::from_str(include_str!("data/stress_areas.toml")).expect("the file lies beside the test")
 }
 
 #[test]
@@ -227,7 +123,7 @@ fn thread_diameters_stand_in_order() {
         assert!(thread.nut_minor_diameter < thread.pitch_diameter);
         assert!(thread.pitch_diameter < thread.diameter);
         // ISO 68-1: the stress diameter is the mean of pitch and minor diameter, metric only.
-        let mean = (thread.pitch_diameter + thread.minor_diameter) / 2.0;
+        let mean = f64::midpoint(thread.pitch_diameter, thread.minor_diameter);
         assert!(thread.inch || off(thread.stress_diameter, mean) < 1e-6);
     }
 }
@@ -270,9 +166,9 @@ fn proof_loads_are_those_printed() {
 #[test]
 fn class_8_8_is_stronger_above_16_mm() {
     // ISO 898-1:2013, table of mechanical properties.
-    let tensile = |diameter| catalog::grade("8.8", diameter).unwrap().tensile.value;
-    assert_eq!(tensile(0.016), 800e6);
-    assert_eq!(tensile(0.018), 830e6);
+    let tensile = |diameter| catalog::grade("8.8", diameter).map(|grade| grade.tensile.value);
+    assert_eq!(tensile(0.016), Some(800e6));
+    assert_eq!(tensile(0.018), Some(830e6));
     assert_eq!(catalog::grade("9.8", 0.020), None);
     let [_, most] = catalog::grade_sizes("9.8").unwrap();
     assert!(off(most, 0.016) < 1e-9);
@@ -410,9 +306,9 @@ fn a_bolt_passes_its_hole_and_its_seat_covers_it() {
 #[test]
 fn friction_classes_are_those_of_the_guide_table() {
     // VDI 2230-1, guide table of friction classes; nominal is the middle.
-    let class = catalog::friction_record("class B").unwrap();
-    assert_eq!(class.values, [0.08, 0.12, 0.16]);
-    assert!(!class.nut_factor);
+    let class = catalog::friction_record("class B");
+    assert_eq!(class.map(|class| class.values), Some([0.08, 0.12, 0.16]));
+    assert!(!class.unwrap().nut_factor);
     assert!(catalog::friction_record("dry steel").unwrap().nut_factor);
     assert_eq!(catalog::friction_record("F"), None);
 }
@@ -425,10 +321,8 @@ fn scatter_follows_from_the_tightening_factor() {
         assert!((scatter - (factor - 1.0) / (factor + 1.0)).abs() < 5e-4);
     }
     // NASA practice: 0.35 as received.
-    assert_eq!(
-        catalog::method("torque, as received").unwrap().scatter,
-        [0.35; 2]
-    );
+    let method = catalog::method("torque, as received");
+    assert_eq!(method.map(|method| method.scatter), Some([0.35; 2]));
 }
 
 #[test]

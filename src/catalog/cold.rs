@@ -223,3 +223,118 @@ impl Grade {
         self.known().contraction_between(from, to)
     }
 }
+
+#[cfg(test)]
+mod tests {
+
+    use crate::catalog::{grade, material, materials};
+
+    /// Relative deviation from an expected value.
+    fn off(found: f64, expected: f64) -> f64 {
+        (found / expected - 1.0).abs()
+    }
+
+    #[test]
+    fn conductivity_goes_from_the_fit_to_the_handbook_without_a_step() {
+        for material in materials() {
+            let mut last = None;
+            for temperature in (160..=320).map(f64::from) {
+                let now = material.conductivity_at(temperature).ok();
+                if let (Some(last), Some(now)) = (last, now) {
+                    // 36 % of difference blended over 50 K, plus the slope of the fit itself.
+                    let off: f64 = off(now, last);
+                    assert!(off < 0.015, "{} at {temperature} K: {off}", material.name);
+                }
+                last = now;
+            }
+            assert_eq!(
+                material.conductivity_at(293.15),
+                Ok(material.conductivity.value),
+                "{}",
+                material.name
+            );
+        }
+    }
+
+    #[test]
+    fn contraction_has_the_slope_of_the_room_temperature_expansion() {
+        for material in materials() {
+            let Some(table) = &material.contraction else {
+                continue;
+            };
+            // Expansion itself falls by some 6 % from 293 K to the middle of the last interval and
+            // sheets differ by as much; PTFE changes its crystal form near 292 K, and one digit of the
+            // table is a third of what is left of Fe-36Ni.
+            let limit = match material.name.as_str() {
+                "PTFE" | "Fe-36Ni" => 1.0,
+                _ => 0.15,
+            };
+            let (temperature, contraction) = table[table.len() - 2];
+            let slope = contraction / (293.0 - temperature);
+            let off = off(slope, material.expansion.value);
+            assert!(off < limit, "{}: {off}", material.name);
+        }
+    }
+
+    #[test]
+    fn contraction_adds_up_and_changes_sign_on_the_way_back() {
+        for name in ["Al 6061-T6", "304", "Cu OFHC", "PTFE"] {
+            let body = material(name).unwrap();
+            let between = |from, to| body.contraction_between(from, to).unwrap();
+            assert!(between(293.0, 77.0) < 0.0);
+            assert!((between(293.0, 77.0) + between(77.0, 293.0)).abs() < 1e-15);
+            let parts = between(350.0, 293.0) + between(293.0, 20.0) + between(20.0, 4.0);
+            // The parts are sums of the same few numbers.
+            assert!((parts - between(350.0, 4.0)).abs() < 1e-12, "{name}");
+        }
+        // Published tables of integrated contraction, from memory; 77 K is an entry.
+        let aluminium = material("Al 6061-T6").unwrap();
+        let found = aluminium.contraction_between(293.0, 77.0).unwrap();
+        assert!((found + 0.00391).abs() < 1e-9);
+    }
+
+    #[test]
+    fn the_cold_is_refused_where_nothing_is_known() {
+        let alloy = material("Al 7075-T73").unwrap();
+        let fault = alloy.conductivity_at(120.0).unwrap_err();
+        assert_eq!(
+            fault.to_string(),
+            "the conductivity of Al 7075-T73 is not known at 120 K: there is no curve k(T) of it, \
+             and room-temperature data do not serve in the cold"
+        );
+        assert!(alloy.conductivity_at(200.0).is_ok());
+        let alloy = material("CuBe2").unwrap();
+        let fault = alloy.conductivity_at(120.0).unwrap_err();
+        assert_eq!(
+            fault.to_string(),
+            "the conductivity of CuBe2 is not known at 120 K: its curve k(T) runs from 2 to 80 K, \
+             and room-temperature data do not serve in the cold"
+        );
+        let ceramic = material("Alumina 96 %").unwrap();
+        let fault = ceramic.contraction_between(293.0, 150.0).unwrap_err();
+        assert_eq!(
+            fault.to_string(),
+            "the contraction of Alumina 96 % is not known at 150 K: there is no table ΔL/L(T) of it, \
+             and room-temperature data do not serve in the cold"
+        );
+        assert!(ceramic.contraction_between(293.0, 220.0).is_ok());
+    }
+
+    #[test]
+    fn bolts_follow_the_material_they_are_like() {
+        let bolt = grade("A2-70", 0.005).unwrap();
+        let like = material("304").unwrap();
+        assert_eq!(bolt.conductivity_at(77.0), like.conductivity_at(77.0));
+        assert_eq!(
+            bolt.contraction_between(293.0, 77.0),
+            like.contraction_between(293.0, 77.0)
+        );
+        assert_eq!(bolt.conductivity_at(300.0), Ok(16.2));
+        let bolt = grade("8.8", 0.005).unwrap();
+        let fault = bolt.conductivity_at(77.0).unwrap_err();
+        assert!(fault.to_string().contains("conductivity of 8.8"));
+        // Iron, from memory: 0.190 % to 77 K.
+        let found = bolt.contraction_between(293.0, 77.0).unwrap();
+        assert!((found + 0.0019).abs() < 1e-9);
+    }
+}

@@ -70,7 +70,7 @@ enum RawModel {
     Layer,
 }
 
-fn read(text: &str) -> Result<Shelf<FillerRecord>, CatalogFault> {
+pub(super) fn read(text: &str) -> Result<Shelf<FillerRecord>, CatalogFault> {
     let file: File = parse("fillers.toml", text)?;
     let records = file
         .filler

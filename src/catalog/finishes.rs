@@ -44,7 +44,7 @@ struct RawFinish {
     note: Option<String>,
 }
 
-fn read(text: &str) -> Result<Shelf<FinishRecord>, CatalogFault> {
+pub(super) fn read(text: &str) -> Result<Shelf<FinishRecord>, CatalogFault> {
     let file: File = parse("finishes.toml", text)?;
     let records = file
         .finish

@@ -53,7 +53,7 @@ enum RawKind {
     NutFactor,
 }
 
-fn read(text: &str) -> Result<Shelf<FrictionRecord>, CatalogFault> {
+pub(super) fn read(text: &str) -> Result<Shelf<FrictionRecord>, CatalogFault> {
     let file: File = parse("friction.toml", text)?;
     let records = file
         .friction

@@ -52,7 +52,7 @@ struct RawGas {
     accommodation: RawDatum,
 }
 
-fn read(text: &str) -> Result<Shelf<Gas>, CatalogFault> {
+pub(super) fn read(text: &str) -> Result<Shelf<Gas>, CatalogFault> {
     let file: File = parse("gases.toml", text)?;
     let records = file
         .gas

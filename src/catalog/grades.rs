@@ -38,7 +38,7 @@ struct Row {
     place: usize,
 }
 
-struct Rack {
+pub(super) struct Rack {
     grades: Vec<Grade>,
     rows: Vec<Row>,
 }
@@ -92,7 +92,7 @@ struct RawGrade {
     _note: Option<String>,
 }
 
-fn read(text: &str) -> Result<Rack, CatalogFault> {
+pub(super) fn read(text: &str) -> Result<Rack, CatalogFault> {
     let file: File = parse("grades.toml", text)?;
     let mut rack = Rack {
         grades: Vec::new(),

@@ -41,7 +41,7 @@ type Fits = BTreeMap<String, (String, ConductivityFit)>;
 type Contractions = BTreeMap<String, Vec<(f64, f64)>>;
 
 #[derive(Debug)]
-struct Shelves {
+pub(super) struct Shelves {
     materials: Shelf<Material>,
     fits: Fits,
 }
@@ -143,7 +143,7 @@ struct RawContraction {
     of: Option<String>,
 }
 
-fn read(text: &str) -> Result<Shelves, CatalogFault> {
+pub(super) fn read(text: &str) -> Result<Shelves, CatalogFault> {
     let file: File = parse("materials.toml", text)?;
     let fits = fits(&file)?;
     let contractions = contractions(&file)?;

@@ -44,7 +44,7 @@ struct RawMethod {
     of: Option<String>,
 }
 
-fn read(text: &str) -> Result<Shelf<MethodRecord>, CatalogFault> {
+pub(super) fn read(text: &str) -> Result<Shelf<MethodRecord>, CatalogFault> {
     let file: File = parse("methods.toml", text)?;
     let records = file
         .method

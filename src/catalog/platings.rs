@@ -55,7 +55,7 @@ enum RawKind {
     Film,
 }
 
-fn read(text: &str) -> Result<Shelf<Plating>, CatalogFault> {
+pub(super) fn read(text: &str) -> Result<Shelf<Plating>, CatalogFault> {
     let file: File = parse("platings.toml", text)?;
     let records = file
         .plating

@@ -193,8 +193,10 @@ mod tests {
             "value = 3\nrange = [2, 4]\nstatus = \"seen\"\nsource = \"book\"\nof = \"page 5\"",
         )
         .unwrap();
-        assert_eq!(read.value, 3e6);
-        assert_eq!(read.range, Some([2e6, 4e6]));
+        assert_eq!(
+            (Some(read.value), read.range),
+            (Some(3e6), Some([2e6, 4e6]))
+        );
         assert_eq!(read.status, Status::Seen);
         assert_eq!(read.source, "a book: page 5");
     }

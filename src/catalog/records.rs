@@ -68,7 +68,7 @@ pub struct Material {
     pub density: Option<Datum>,
     /// Meyer hardness (mean pressure over the projected area), Pa.
     pub hardness: Option<Datum>,
-    /// Vickers microhardness c₁ (Pa) and c₂ of Hv = c₁ (d_v / 1 µm)^c₂.
+    /// Vickers microhardness c₁ (Pa) and c₂ of `Hv = c₁ (d_v / 1 µm)^c₂`.
     pub microhardness: Option<[f64; 2]>,
     /// Yield strength, Pa.
     pub yield_strength: Option<Datum>,

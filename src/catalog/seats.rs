@@ -16,8 +16,8 @@ pub fn seats() -> &'static [SeatRecord] {
     &rack().seats
 }
 
-/// A seat by kind (`hex`, `socket`, `pan`, `button`, `countersunk`, `nut`, `washer`) or standard
-/// (`ISO 7089`), for a thread by designation (`M10x1.25`) or size (`1/4`).
+/// A seat by kind (`hex`, `socket`, `pan`, `button`, `countersunk`, `nut`, `washer`), by another
+/// name of it (`hexagon`) or by a standard that means one kind (`ISO 7089`), for a thread by designation (`M10x1.25`) or size (`1/4`).
 pub fn seat(kind: &str, thread_name: &str) -> Option<&'static SeatRecord> {
     let rack = rack();
     let size = size_of(thread_name);
@@ -62,7 +62,7 @@ struct Group {
     places: std::ops::Range<usize>,
 }
 
-struct Rack {
+pub(super) struct Rack {
     seats: Vec<SeatRecord>,
     groups: Vec<Group>,
 }
@@ -102,7 +102,7 @@ struct RawSeat {
     of: Option<String>,
 }
 
-fn read(text: &str) -> Result<Rack, CatalogFault> {
+pub(super) fn read(text: &str) -> Result<Rack, CatalogFault> {
     let file: File = parse("seats.toml", text)?;
     let mut rack = Rack {
         seats: Vec::new(),
@@ -119,15 +119,33 @@ fn read(text: &str) -> Result<Rack, CatalogFault> {
             }
             rack.seats.push(seat);
         }
-        let names = [&raw.kind, &raw.standard].into_iter().chain(&raw.aliases);
-        rack.groups.push(Group {
+        let group = Group {
             kind: raw.kind.clone(),
             aliases: raw.aliases.clone(),
-            names: names.map(|name| plain(name)).collect(),
+            names: std::iter::once(&raw.kind)
+                .chain(&raw.aliases)
+                .map(|name| plain(name))
+                .collect(),
             places: first..rack.seats.len(),
-        });
+        };
+        refuse_ambiguous(&group, &rack.groups)?;
+        rack.groups.push(group);
     }
     Ok(rack)
+}
+
+/// One name means one kind, and no group has it twice.
+fn refuse_ambiguous(group: &Group, others: &[Group]) -> Result<(), CatalogFault> {
+    let names = &group.names;
+    let twice = (1..names.len()).any(|n| names[..n].contains(&names[n]));
+    let clash = others.iter().any(|other| {
+        other.kind != group.kind && other.names.iter().any(|name| group.names.contains(name))
+    });
+    if twice || clash {
+        let what = "a name is given twice or stands for two kinds";
+        return Err(CatalogFault::new(&group.kind, what));
+    }
+    Ok(())
 }
 
 fn checked(raw: &RawSeat, group: &RawGroup, sources: &Sources) -> Result<SeatRecord, CatalogFault> {
@@ -196,7 +214,7 @@ struct RawHole {
     of: Option<String>,
 }
 
-fn read_holes(text: &str) -> Result<Vec<ClearanceHole>, CatalogFault> {
+pub(super) fn read_holes(text: &str) -> Result<Vec<ClearanceHole>, CatalogFault> {
     let file: HoleFile = parse("holes.toml", text)?;
     let mut holes = Vec::<ClearanceHole>::new();
     for group in &file.group {

@@ -78,7 +78,7 @@ fn key(name: &str) -> String {
     }
 }
 
-struct Rack {
+pub(super) struct Rack {
     threads: Vec<Thread>,
     origins: Vec<(String, Origin)>,
     index: BTreeMap<String, usize>,
@@ -123,7 +123,7 @@ struct RawThread {
     per_inch: Option<f64>,
 }
 
-fn read(text: &str) -> Result<Rack, CatalogFault> {
+pub(super) fn read(text: &str) -> Result<Rack, CatalogFault> {
     let file: File = parse("threads.toml", text)?;
     let mut rack = Rack {
         threads: Vec::new(),
