@@ -144,19 +144,20 @@ fn reading(text: &str, sets: &[String]) -> (Option<Joint>, Vec<Fault>) {
     if let Some(told) = newer_format(&file) {
         return (None, vec![told]);
     }
-    if !syntax.is_empty() {
-        let echoes = collector.into_parts().0;
-        let mut faults = syntax::without_echoes(echoes, &syntax, text);
-        faults.extend(syntax);
-        faults.sort_by_key(|fault| fault.span.start);
-        return (None, faults);
-    }
-    let joint = if overridden {
+    let readable = syntax::all_recovered(&errors);
+    let joint = if overridden && readable {
         assembled(&file, &mut collector)
     } else {
         None
     };
     let (faults, assumptions) = collector.into_parts();
+    let mut faults = syntax::without_echoes(faults, &syntax, text);
+    if !readable {
+        // What seems missing may stand in the part that could not be read.
+        faults.retain(|fault| fault.code != "file/missing-key");
+    }
+    faults.extend(syntax);
+    faults.sort_by_key(|fault| fault.span.start);
     let joint = joint.map(|joint| Joint {
         assumptions,
         ..joint
@@ -194,7 +195,10 @@ fn assembled(file: &Record, collector: &mut Collector) -> Option<Joint> {
         .map(|case| case.temperature);
     let filler = filler::read(file, collector);
     let measured = filler::measured(file, temperature, collector);
-    let plates = plates?;
+    let Some(plates) = plates else {
+        fasteners::read_alone(file, collector);
+        return None;
+    };
     let source = plates::source(&plates[0], collector);
     let sink = plates::sink(&plates[1], collector);
     let contact = contact::read(file, &plates, collector);

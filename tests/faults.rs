@@ -164,6 +164,50 @@ fn all_faults_are_told_at_once() {
 }
 
 #[test]
+fn a_slip_of_a_key_is_told_once_and_its_value_is_read() {
+    let (_, good) = broken()
+        .into_iter()
+        .find(|(name, _)| name == "file-unknown-key")
+        .expect("the file is kept");
+    let codes = |text: &str| -> Vec<&str> {
+        let faults = joint::read(text).expect_err("the key is unknown");
+        faults.iter().map(|fault| fault.code).collect()
+    };
+    assert_eq!(codes(&good), ["file/unknown-key"]);
+    let worse = good.replace("torqe = \"2 N·m\"", "torqe = \"2 N\"");
+    assert_eq!(codes(&worse), ["file/unknown-key", "unit/not-a-quantity"]);
+    // A whole table under a mistyped name is read as well.
+    let table = good.replace("[fastener]", "[fasteners]");
+    assert_eq!(codes(&table), ["file/unknown-key", "file/unknown-key"]);
+}
+
+#[test]
+fn faults_behind_a_slip_of_syntax_are_told_too() {
+    let (_, text) = broken()
+        .into_iter()
+        .find(|(name, _)| name == "file-syntax")
+        .expect("the file is kept");
+    let text = text.replace("\"70 mm\", \"50 mm\"", "\"90 mm\", \"50 mm\"");
+    let faults = joint::read(&text).expect_err("quotes are missing");
+    let codes: Vec<_> = faults.iter().map(|fault| fault.code).collect();
+    assert_eq!(codes, ["file/syntax", "plate/hole-outside"]);
+}
+
+#[test]
+fn bolts_are_checked_even_without_plates() {
+    let (_, text) = broken()
+        .into_iter()
+        .find(|(name, _)| name == "plate-count")
+        .expect("the file is kept");
+    let start = text.find("[[plate]]").expect("plates are stated");
+    let end = text.find("[fastener]").expect("a fastener is stated");
+    let text = format!("{}{}", &text[..start], &text[end..]).replace("8.8", "8.7");
+    let faults = joint::read(&text).expect_err("plates are missing");
+    let codes: Vec<_> = faults.iter().map(|fault| fault.code).collect();
+    assert_eq!(codes, ["file/missing-key", "name/unknown"]);
+}
+
+#[test]
 fn a_huge_file_is_refused_with_the_limit_named() {
     let text = "# ".repeat(joint::LONGEST_FILE / 2 + 1);
     let faults = joint::read(&text).expect_err("it is too large");

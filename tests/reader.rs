@@ -544,6 +544,37 @@ fn an_override_takes_the_place_of_what_it_excludes() {
 }
 
 #[test]
+fn plates_without_names_are_called_upper_and_lower() {
+    let text = plain()
+        .replace("name = \"box\"\n", "")
+        .replace("name = \"panel\"\n", "");
+    let joint = read_with(&text, &["plate.lower.thickness=8 mm"]);
+    assert_eq!(joint.warm().name, "upper");
+    assert!(near(joint.cold().thickness, 8e-3));
+    assert!(
+        joint
+            .assumptions
+            .iter()
+            .any(|a| a.field == "plate.upper.finish.slope")
+    );
+}
+
+#[test]
+fn an_assumption_is_told_once() {
+    for text in [plain(), FULL.to_owned()] {
+        let joint = read(&text);
+        let fields: std::collections::BTreeSet<_> =
+            joint.assumptions.iter().map(|a| &a.field).collect();
+        assert_eq!(
+            fields.len(),
+            joint.assumptions.len(),
+            "{:#?}",
+            joint.assumptions
+        );
+    }
+}
+
+#[test]
 fn a_fault_in_an_override_points_into_it() {
     let sets = ["title=x".to_owned(), "plate.box.thickness=6 N".to_owned()];
     let faults = joint::read_with(&plain(), &sets).expect_err("newtons are no length");

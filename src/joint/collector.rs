@@ -37,8 +37,17 @@ impl Collector {
         value: impl Into<String>,
         why: impl Into<String>,
     ) {
+        let field = field.into();
+        // The values of a range are read one after the other; what is assumed for all is told once.
+        if self
+            .assumptions
+            .last()
+            .is_some_and(|last| last.field == field)
+        {
+            return;
+        }
         self.assumptions.push(Assumption {
-            field: field.into(),
+            field,
             value: value.into(),
             why: why.into(),
         });

@@ -53,6 +53,16 @@ pub(super) fn read(
     (fasteners.len() == records.len() && !fasteners.is_empty()).then_some(fasteners)
 }
 
+/// Tells the faults of fasteners that do not depend on the plates, when these are not known.
+pub(super) fn read_alone(file: &Record, collector: &mut Collector) {
+    for record in file.records("fastener") {
+        if let Some(thread) = thread(record, collector) {
+            grade(record, thread, collector);
+        }
+        tightening::read(record, collector);
+    }
+}
+
 /// A group, and its site even when other parts of the group are faulty.
 fn group(
     record: &Record,

@@ -131,6 +131,11 @@ fn in_range(record: &Record, rq: f64, collector: &mut Collector) -> Option<Bound
 }
 
 fn unknown_process(record: &Record, text: &str, collector: &mut Collector) {
+    let help = if catalog::plating(text).is_some() {
+        format!("it is a plating: `finish = {{ roughness = \"Ra 0.8 µm\", plating = \"{text}\" }}`")
+    } else {
+        "state the roughness: `finish = { roughness = \"Ra 0.8 µm\" }`".into()
+    };
     let known = catalog::finishes().iter().flat_map(|finish| {
         std::iter::once(finish.name.as_str()).chain(finish.aliases.iter().map(String::as_str))
     });
@@ -141,7 +146,7 @@ fn unknown_process(record: &Record, text: &str, collector: &mut Collector) {
             format!("no finishing process is called `{}`", short(text)),
         )
         .expecting("expected a process or a roughness")
-        .help("state the roughness: `finish = { roughness = \"Ra 0.8 µm\" }`")
+        .help(help)
         .nearest(text, known),
     );
 }

@@ -7,7 +7,7 @@ use crate::{
     joint::{
         collector::{Collector, Wording, fault},
         fields::{Kind, SPREAD_KEYS, Section, listed},
-        sections::FILE,
+        sections::{FILE, default_name},
         tree::{Form, Key, Node, Span, short},
     },
 };
@@ -147,7 +147,7 @@ fn set_in(node: &mut Node, section: &'static Section, steps: &[Step], value: Wri
     match (field.kind, rest) {
         (Kind::List(inner), rest) => {
             let list = slot(node, section, step)?;
-            let (element, rest) = element(list, step, rest)?;
+            let (element, rest) = element(list, inner, step, rest)?;
             if rest.is_empty() {
                 return Err(Box::new(
                     bad(step, format!("`{}` is a whole table", step.name))
@@ -275,6 +275,7 @@ fn open_spread(node: &mut Node) {
 /// The table of a list that a path names: `plate.upper`, `fastener[2]`, or the only one.
 fn element<'n, 's>(
     list: &'n mut Node,
+    section: &Section,
     step: &Step,
     rest: &'s [Step],
 ) -> Result<(&'n mut Node, &'s [Step]), Box<Fault>> {
@@ -302,11 +303,7 @@ fn element<'n, 's>(
         .iter()
         .enumerate()
         .filter_map(|(place, node)| {
-            let default = match (step.name.as_str(), place) {
-                ("plate", 0) => Some("upper"),
-                ("plate", 1) => Some("lower"),
-                _ => None,
-            };
+            let default = default_name(section, place);
             node.text_of("name").or(default).map(str::to_owned)
         })
         .collect();

@@ -9,6 +9,7 @@ use crate::{
         geometry::{Placed, holds_zone, overlap},
         materials::{self, Own, duplicate},
         record::Record,
+        sections::PLATE_NAMES,
         walk::missing,
     },
 };
@@ -97,8 +98,8 @@ pub(super) fn read(
         );
         return None;
     };
-    let mut upper = draft(first, "upper", own, collector);
-    let mut lower = draft(second, "lower", own, collector);
+    let mut upper = draft(first, PLATE_NAMES[0], own, collector);
+    let mut lower = draft(second, PLATE_NAMES[1], own, collector);
     if upper.name == lower.name {
         collector.report(duplicate("plate", &lower.name, &second.span("name")));
     }

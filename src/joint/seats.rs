@@ -68,7 +68,10 @@ pub(super) fn holes(
             Some(diameter) => diameter,
             // A thread or an insert fills its hole; there is no clearance.
             None if threaded && plate == far => bolt.thread.diameter,
-            None => *assumed.get_or_insert(medium_hole(bolt, collector)?),
+            None => match assumed {
+                Some(diameter) => diameter,
+                None => *assumed.insert(medium_hole(bolt, collector)?),
+            },
         };
         let clear = diameter > bolt.thread.diameter;
         let fits = clear || (threaded && plate == far && diameter > 0.5 * bolt.thread.diameter);

@@ -18,6 +18,15 @@ pub use plates::{
 /// The newest format this version reads.
 pub const FORMAT: usize = 1;
 
+/// Names of plates that state none, in file order.
+pub const PLATE_NAMES: [&str; 2] = ["upper", "lower"];
+
+/// Name of a table that states none, by its place in its list.
+pub(super) fn default_name(section: &Section, index: usize) -> Option<&'static str> {
+    let names = (section.name == PLATE.name).then_some(PLATE_NAMES)?;
+    names.get(index).copied()
+}
+
 /// The joint file.
 pub static FILE: Section = Section {
     name: "",

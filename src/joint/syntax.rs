@@ -33,15 +33,27 @@ pub(super) fn without_echoes(faults: Vec<Fault>, syntax: &[Fault], text: &str) -
         .collect();
     faults
         .into_iter()
-        .filter(|fault| {
-            fault.code != "file/missing-key" && !lines.contains(&line_of(text, &fault.span))
-        })
+        .filter(|fault| !lines.contains(&line_of(text, &fault.span)))
         .collect()
 }
 
+/// Whether TOML read on past every error with all values in place: only quotes were missing, or
+/// a key stood twice. Then what the file says can be checked as well.
+pub(super) fn all_recovered(errors: &[toml::de::Error]) -> bool {
+    errors
+        .iter()
+        .all(|error| error.message().contains(UNQUOTED) || error.message() == DUPLICATE)
+}
+
+/// What TOML says of a text without quotes.
+const UNQUOTED: &str = "must be quoted";
+
+/// What TOML says of a key that stands twice.
+const DUPLICATE: &str = "duplicate key";
+
 fn worded(message: &str, span: &Span, text: &str) -> Fault {
     let found = text.get(span.clone()).unwrap_or_default();
-    if message.contains("must be quoted") && !found.contains('\n') {
+    if message.contains(UNQUOTED) && !found.contains('\n') {
         return fault(
             "file/syntax",
             span,
@@ -50,7 +62,7 @@ fn worded(message: &str, span: &Span, text: &str) -> Fault {
         .expecting(format!("expected `\"{}\"`", short(found)))
         .help("text, and every value with a unit, stands in quotes");
     }
-    if message == "duplicate key" {
+    if message == DUPLICATE {
         return fault(
             "file/duplicate",
             span,

@@ -11,6 +11,7 @@ use crate::{
         collector::{Collector, Wording, fault},
         fields::{Field, Kind, Measure, Need, SPREAD_KEYS, Section, listed},
         record::{Entry, PerPlate, Point, Record, Value},
+        sections::default_name,
         tree::{Form, Key, Node, Span, short},
     },
 };
@@ -42,22 +43,12 @@ impl Walk<'_> {
         };
         let mut record = Record::absent(path, &node.span);
         for (key, value) in entries {
-            let Some(field) = section.field(&key.name) else {
-                let meant = self
-                    .unknown(key, section)
-                    .and_then(|near| section.field(&near));
-                // The key that was meant counts as stated, so that one slip is told once.
-                if let Some(field) = meant
-                    && node.child(field.key).is_none()
-                {
-                    record.entries.push(Entry {
-                        field,
-                        span: key.span.clone(),
-                        value: None,
-                    });
-                }
-                continue;
-            };
+            // A slip of the key is told, and its value read as what was meant: one fault, not two.
+            let field = section.field(&key.name).or_else(|| {
+                self.unknown(key, section)
+                    .filter(|meant| node.child(meant.key).is_none())
+            });
+            let Some(field) = field else { continue };
             let path = record.at(field.key);
             let value_read = self.value(Stated {
                 field,
@@ -149,6 +140,17 @@ impl Walk<'_> {
     fn records(&mut self, stated: Stated<'_>, section: &'static Section) -> Option<Vec<Record>> {
         let nodes = match &stated.node.form {
             Form::List(nodes) => nodes.as_slice(),
+            Form::Table(entries) if names_tables(entries, section) => {
+                self.collector.report(
+                    wrong_type(stated.node, &format!("`{}`", section.name), "a table")
+                        .expecting(format!("expected `[[{}]]`", section.name))
+                        .help(format!(
+                            "head each with `[[{}]]` and put its name inside: `name = \"{}\"`",
+                            section.name, entries[0].0.name
+                        )),
+                );
+                return None;
+            }
             Form::Table(_) => std::slice::from_ref(stated.node),
             _ => {
                 self.collector.report(
@@ -163,7 +165,8 @@ impl Walk<'_> {
         }
         let mut records = Vec::with_capacity(nodes.len());
         for (index, node) in nodes.iter().enumerate() {
-            let path = match node.text_of("name") {
+            let name = node.text_of("name").or(default_name(section, index));
+            let path = match name {
                 Some(name) => format!("{}.{name}", section.name),
                 None if nodes.len() == 1 => section.name.to_owned(),
                 None => format!("{}[{}]", section.name, index + 1),
@@ -281,22 +284,26 @@ impl Walk<'_> {
         count <= MOST_PLACES
     }
 
-    /// Tells of an unknown key; returns the key of this table that was probably meant.
-    fn unknown(&mut self, key: &Key, section: &Section) -> Option<String> {
+    /// Tells of an unknown key; returns the field of this table that was probably meant.
+    fn unknown(&mut self, key: &Key, section: &Section) -> Option<&'static Field> {
         let told = fault(
             "file/unknown-key",
             &key.span,
             format!("unknown key `{}`", short(&key.name)),
         )
         .expecting("not a key of this table");
+        if let Some(place) = home(&key.name, section) {
+            self.collector
+                .report(told.help(format!("`{}` belongs in {place}", key.name)));
+            return None;
+        }
         let near = diagnostic::nearest(&key.name, section.keys());
-        let help = match (home(&key.name, section), &near) {
-            (Some(place), _) => format!("`{}` belongs in {place}", key.name),
-            (None, Some(near)) => format!("did you mean `{near}`?"),
-            (None, None) => format!("it takes {}", listed(&section.keys().collect::<Vec<_>>())),
+        let help = match &near {
+            Some(near) => format!("did you mean `{near}`?"),
+            None => format!("it takes {}", listed(&section.keys().collect::<Vec<_>>())),
         };
         self.collector.report(told.help(help));
-        near
+        near.and_then(|near| section.field(&near))
     }
 
     fn wrong(&mut self, stated: Stated<'_>) {
@@ -344,6 +351,14 @@ fn wrong_type(node: &Node, what: &str, expected: &str) -> Fault {
         format!("{what} is {}", node.shown()),
     )
     .expecting(format!("expected {expected}"))
+}
+
+/// Whether a table holds only tables under names of their own: `[plate.upper]`.
+fn names_tables(entries: &[(Key, Node)], section: &Section) -> bool {
+    !entries.is_empty()
+        && entries.iter().all(|(key, node)| {
+            section.field(&key.name).is_none() && matches!(node.form, Form::Table(_))
+        })
 }
 
 /// The table of the file to which a misplaced key belongs.
