@@ -6,7 +6,7 @@ use crate::{
 };
 
 /// So many faults are told; a file with more is not being read by anyone.
-const MOST_FAULTS: usize = 200;
+pub(super) const MOST_FAULTS: usize = 200;
 
 /// What one reading found.
 #[derive(Debug, Default)]
