@@ -208,6 +208,30 @@ fn bolts_are_checked_even_without_plates() {
 }
 
 #[test]
+fn part_of_a_name_lists_those_that_hold_it() {
+    let (_, text) = broken()
+        .into_iter()
+        .find(|(name, _)| name == "name-unknown")
+        .expect("the file is kept");
+    let faults = joint::read(&text.replace("Al 6061-T7", "brass")).expect_err("several are known");
+    let help = faults[0].help.as_deref().unwrap_or_default();
+    assert!(help.to_lowercase().contains("brass"), "{help}");
+}
+
+#[test]
+fn a_roughness_without_its_parameter_is_not_a_process() {
+    let (_, text) = broken()
+        .into_iter()
+        .find(|(name, _)| name == "name-unknown")
+        .expect("the file is kept");
+    let text = text
+        .replace("Al 6061-T7", "Al 6061-T6")
+        .replacen("milled", "32 µin", 1);
+    let faults = joint::read(&text).expect_err("Ra or Rq is missing");
+    assert_eq!(faults[0].code, "unit/not-a-quantity");
+}
+
+#[test]
 fn a_huge_file_is_refused_with_the_limit_named() {
     let text = "# ".repeat(joint::LONGEST_FILE / 2 + 1);
     let faults = joint::read(&text).expect_err("it is too large");

@@ -222,39 +222,36 @@ fn crossing(curve: &[[f64; 2]], share: f64) -> Option<f64> {
 /// Names at the ends of the curves; curves that end within half a percent share a line.
 fn end_labels(plot: &CumulativePlot, curves: &[Vec<[f64; 2]>]) -> Vec<EndLabel> {
     const ROOM: f64 = 150.0;
-    let mut ends: Vec<(f64, (usize, &str), Colour)> = curves
-        .iter()
-        .zip(&plot.curves)
-        .enumerate()
-        .map(|(index, (points, curve))| {
-            let last = points[points.len() - 1][1];
-            (
-                last,
-                (index, curve.label.as_str()),
-                stroke(index, curves.len()).colour,
-            )
-        })
-        .collect();
-    ends.sort_by(|a, b| b.0.total_cmp(&a.0));
-    let close = 0.005 * ends.iter().map(|e| e.0.abs()).fold(0.0, f64::max);
-    let mut groups: Vec<(f64, Vec<(usize, &str)>, Colour)> = Vec::new();
-    for (value, name, colour) in ends {
+    let last = |index: &usize| curves[*index].last().map_or(0.0, |point| point[1]);
+    let mut order: Vec<usize> = (0..curves.len()).collect();
+    order.sort_by(|a, b| last(b).total_cmp(&last(a)));
+    let close = 0.005
+        * order
+            .iter()
+            .map(|index| last(index).abs())
+            .fold(0.0, f64::max);
+    let mut groups: Vec<Vec<usize>> = Vec::new();
+    for index in order {
         match groups.last_mut() {
-            Some(group) if group.0 - value <= close => group.1.push(name),
-            _ => groups.push((value, vec![name], colour)),
+            Some(group) if last(&group[0]) - last(&index) <= close => group.push(index),
+            _ => groups.push(vec![index]),
         }
     }
     groups
         .into_iter()
-        .map(|(value, mut names, colour)| {
+        .map(|mut group| {
+            let value = last(&group[0]);
             let total = format!(": {} W/K", axis::significant(value, 3));
-            names.sort_unstable_by_key(|(index, _)| *index);
-            let names: Vec<&str> = names.into_iter().map(|(_, name)| name).collect();
+            group.sort_unstable();
+            let names: Vec<&str> = group
+                .iter()
+                .map(|k| plot.curves[*k].label.as_str())
+                .collect();
             let names = END.shortened(&names.join(", "), ROOM - END.width(&total));
             EndLabel {
                 value,
                 text: names + &total,
-                colour,
+                colour: stroke(group[0], curves.len()).colour,
             }
         })
         .collect()

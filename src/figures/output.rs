@@ -80,15 +80,19 @@ pub(super) fn png(sheet: &Sheet) -> Result<Vec<u8>, FigureError> {
     let step = FINE / PIXELS;
     let (columns, rows) = (width / step, height / step);
     let mut pixels = Vec::with_capacity(3 * columns * rows);
-    for at in 0..rows * columns {
-        let (row, column) = (step * (at / columns), step * (at % columns));
-        for channel in 0..3 {
-            let sum: usize = (0..step * step)
-                .map(|k| 3 * ((row + k / step) * width + column + k % step) + channel)
-                .map(|place| usize::from(buffer[place]))
-                .sum();
-            pixels.push((sum / (step * step)) as u8);
+    let mut sums = vec![0_u16; 3 * columns];
+    for band in buffer.chunks_exact(3 * width * step).take(rows) {
+        sums.fill(0);
+        for line in band.chunks_exact(3 * width) {
+            for (sum, block) in sums.chunks_exact_mut(3).zip(line.chunks_exact(3 * step)) {
+                for pixel in block.chunks_exact(3) {
+                    sum[0] += u16::from(pixel[0]);
+                    sum[1] += u16::from(pixel[1]);
+                    sum[2] += u16::from(pixel[2]);
+                }
+            }
         }
+        pixels.extend(sums.iter().map(|sum| (sum / (step * step) as u16) as u8));
     }
     let mut bytes = Vec::new();
     let mut encoder = png::Encoder::new(&mut bytes, columns as u32, rows as u32);

@@ -3,7 +3,7 @@
 use crate::figures::{
     clip::Frame,
     fonts::Weight,
-    lettering::{Anchor, Lettering, Turn, cleaned},
+    lettering::{Anchor, Lettering, cleaned},
     picture::Picture,
 };
 
@@ -141,12 +141,13 @@ impl Sheet {
 
     /// A closed line with sharp corners.
     pub(super) fn closed_within(&mut self, frame: Frame, points: &[[f64; 2]], stroke: Stroke) {
+        const STRAIGHT: f64 = 1e-9;
         let [first, second, ..] = points else {
             return;
         };
         let upright = (0..points.len()).all(|k| {
             let (a, b) = (points[k], points[(k + 1) % points.len()]);
-            a[0] == b[0] || a[1] == b[1]
+            (a[0] - b[0]).abs().min((a[1] - b[1]).abs()) < STRAIGHT
         });
         if upright {
             // Side by side and half a line longer each, which the pixel backend keeps straight.
@@ -154,7 +155,7 @@ impl Sheet {
                 let (a, b) = (points[k], points[(k + 1) % points.len()]);
                 let reach = [0, 1].map(|axis| {
                     let step = b[axis] - a[axis];
-                    if step == 0.0 {
+                    if step.abs() < STRAIGHT {
                         0.0
                     } else {
                         step.signum() * stroke.width / 2.0
@@ -173,7 +174,7 @@ impl Sheet {
             return;
         }
         // The seam lies in the middle of a side, so that every corner is a joint.
-        let seam = [(first[0] + second[0]) / 2.0, (first[1] + second[1]) / 2.0];
+        let seam = [0, 1].map(|axis| f64::midpoint(first[axis], second[axis]));
         let mut path = vec![seam];
         path.extend_from_slice(&points[1..]);
         path.extend([*first, seam]);
@@ -268,32 +269,6 @@ fn dashes(points: &[[f64; 2]], pattern: &[f64]) -> Vec<Vec<[f64; 2]>> {
         pieces.push(piece);
     }
     pieces
-}
-
-/// The rectangle a text covers, for the tests of the layout.
-#[cfg(test)]
-pub(super) fn text_box(at: [f64; 2], content: &str, lettering: Lettering) -> Frame {
-    let width = lettering.width(content);
-    let before = match lettering.anchor {
-        Anchor::Start => 0.0,
-        Anchor::Middle => width / 2.0,
-        Anchor::End => width,
-    };
-    let (rise, fall) = (0.76 * lettering.size, 0.24 * lettering.size);
-    match lettering.turn {
-        Turn::None => Frame {
-            left: at[0] - before,
-            top: at[1] - rise,
-            right: at[0] - before + width,
-            bottom: at[1] + fall,
-        },
-        Turn::Up => Frame {
-            left: at[0] - rise,
-            top: at[1] + before - width,
-            right: at[0] + fall,
-            bottom: at[1] + before,
-        },
-    }
 }
 
 #[cfg(test)]

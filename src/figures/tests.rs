@@ -1,4 +1,5 @@
-//! The layout of every kind of figure: texts lie on the sheet and never on each other.
+//! The layout of every kind of figure: texts lie on the sheet and never on each other, and no
+//! numbers make it panic.
 
 use proptest::prelude::*;
 
@@ -6,11 +7,40 @@ use crate::{
     estimate::{Band, TorquePoint, TorqueSweep},
     figures::{
         CumulativePlot, Curve, Drawing, PlanBolt, PlanMap, PlanOutline, PlanShape, RadiusMark,
-        Scale, sheet as draw,
-        sheet::{Mark, Sheet, text_box},
+        Scale,
+        clip::Frame,
+        lettering::{Anchor, Lettering, Turn},
+        sheet as draw,
+        sheet::{Mark, Sheet},
+        svg,
     },
     joint::Limit,
 };
+
+/// The rectangle a text covers.
+fn text_box(at: [f64; 2], content: &str, lettering: Lettering) -> Frame {
+    let width = lettering.width(content);
+    let before = match lettering.anchor {
+        Anchor::Start => 0.0,
+        Anchor::Middle => width / 2.0,
+        Anchor::End => width,
+    };
+    let (rise, fall) = (0.76 * lettering.size, 0.24 * lettering.size);
+    match lettering.turn {
+        Turn::None => Frame {
+            left: at[0] - before,
+            top: at[1] - rise,
+            right: at[0] - before + width,
+            bottom: at[1] + fall,
+        },
+        Turn::Up => Frame {
+            left: at[0] - rise,
+            top: at[1] + before - width,
+            right: at[0] + fall,
+            bottom: at[1] + before,
+        },
+    }
+}
 
 fn texts_are_clear(sheet: &Sheet) -> Result<(), String> {
     let boxes: Vec<_> = sheet
@@ -154,5 +184,79 @@ proptest! {
         };
         let sheet = draw(&Drawing::Cumulative(plot)).unwrap();
         prop_assert_eq!(texts_are_clear(&sheet), Ok(()));
+    }
+}
+
+fn wild() -> impl Strategy<Value = f64> {
+    prop_oneof![
+        4 => -1.0..1.0_f64,
+        2 => any::<f64>(),
+        1 => Just(f64::NAN),
+        1 => Just(f64::INFINITY),
+        1 => Just(f64::MAX),
+        1 => Just(f64::MIN_POSITIVE),
+        1 => Just(0.0),
+    ]
+}
+
+proptest! {
+    #![proptest_config(ProptestConfig::with_cases(24))]
+
+    #[test]
+    fn no_numbers_make_a_figure_panic(
+        numbers in prop::collection::vec(wild(), 60),
+        title in ".{0,40}",
+        tame: bool,
+    ) {
+        // Half of the cases keep the frame sane, so that wild contents are reached and drawn.
+        let n = |k: usize| numbers[k % numbers.len()];
+        let frame = |k: usize, sane: f64| if tame { sane } else { n(k) };
+        let map = PlanMap {
+            title: title.clone(),
+            window: [frame(0, 0.0), frame(1, 0.0), frame(2, 0.05), frame(3, 0.03)],
+            size: [4, 3],
+            values: (10..22).map(|k| frame(k, n(k).clamp(-1e9, 1e9))).collect(),
+            factor: frame(4, 1.0),
+            outlines: vec![
+                PlanOutline {
+                    name: title.clone(),
+                    shape: PlanShape::Polygon(vec![[n(5), n(6)], [n(7), n(8)], [n(9), n(10)]]),
+                },
+                PlanOutline {
+                    name: title.clone(),
+                    shape: PlanShape::Disc { centre: [n(22), n(23)], radius: n(24) },
+                },
+            ],
+            bolts: (0..3)
+                .map(|k| PlanBolt {
+                    at: [n(25 + k), n(28 + k)],
+                    hole_radius: n(31 + k),
+                    head_radius: n(34 + k),
+                    contact_radius: Some(n(37 + k)),
+                })
+                .collect(),
+            heated: Some(PlanShape::Rectangle { corner: [n(40), n(41)], size: [n(42), n(43)] }),
+            ..plan([1.0, 1.0], 1.0, Scale::Logarithmic, 0)
+        };
+        let plot = CumulativePlot {
+            title: title.clone(),
+            curves: vec![Curve {
+                label: title.clone(),
+                points: (0..8).map(|k| (n(2 * k), n(2 * k + 1))).collect(),
+            }],
+            marks: vec![RadiusMark { name: title, radius: n(44) }],
+        };
+        let mut torque = sweep(2.2, 2.9, 0.8, 1.0);
+        torque.stated = n(45);
+        torque.best = n(46);
+        torque.largest = Some((n(47), "yield"));
+        torque.required = Some((n(48), Limit::Least));
+        torque.points[3].torque = n(49);
+        torque.points[5].contact.high = Some(n(50));
+        torque.points[6].source_to_sink.nominal = n(51);
+        for drawing in [Drawing::Plan(map), Drawing::Cumulative(plot), Drawing::Torque(torque)] {
+            // An error is as good as a figure; only a panic is not.
+            let _ = svg(&drawing);
+        }
     }
 }

@@ -309,13 +309,14 @@ fn draw_requirement(
 
 /// The nominal value at a torque, linear between points.
 fn between(points: &[Point], torque: f64) -> Option<f64> {
-    if let Some(point) = points.iter().find(|p| p.torque == torque) {
-        return Some(point.nominal);
+    if let [only] = points {
+        return Some(only.nominal);
     }
     let pair = points
         .windows(2)
-        .find(|pair| pair[0].torque < torque && torque < pair[1].torque)?;
-    let t = (torque - pair[0].torque) / (pair[1].torque - pair[0].torque);
+        .find(|pair| pair[0].torque <= torque && torque <= pair[1].torque)?;
+    let span = (pair[1].torque - pair[0].torque).max(f64::MIN_POSITIVE);
+    let t = (torque - pair[0].torque) / span;
     Some(pair[0].nominal + t * (pair[1].nominal - pair[0].nominal))
 }
 

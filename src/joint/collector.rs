@@ -2,11 +2,11 @@
 
 use crate::{
     diagnostic::{self, Assumption, Fault},
-    joint::tree::Span,
+    joint::{fields::listed, tree::Span},
 };
 
 /// So many faults are told; a file with more is not being read by anyone.
-const MOST_FAULTS: usize = 200;
+pub(super) const MOST_FAULTS: usize = 200;
 
 /// What one reading found.
 #[derive(Debug, Default)]
@@ -87,7 +87,7 @@ pub(super) trait Wording {
     fn expecting(self, label: impl Into<String>) -> Self;
     /// How to mend it.
     fn help(self, help: impl Into<String>) -> Self;
-    /// The nearest known name, if one is near.
+    /// The nearest known name, or those that hold it.
     fn nearest<'a>(self, name: &str, known: impl Iterator<Item = &'a str>) -> Self;
 }
 
@@ -103,8 +103,12 @@ impl Wording for Fault {
     }
 
     fn nearest<'a>(mut self, name: &str, known: impl Iterator<Item = &'a str>) -> Self {
-        if let Some(near) = diagnostic::nearest(name, known) {
-            let help = format!("did you mean `{near}`?");
+        let known: Vec<&str> = known.collect();
+        let near = diagnostic::nearest(name, known.iter().copied())
+            .map(|near| format!("`{near}`"))
+            .or_else(|| holding(name, &known));
+        if let Some(near) = near {
+            let help = format!("did you mean {near}?");
             self.help = Some(match self.help {
                 Some(more) => format!("{help} {more}"),
                 None => help,
@@ -112,4 +116,19 @@ impl Wording for Fault {
         }
         self
     }
+}
+
+/// Known names that hold the whole of a short one: `brass` means one of several.
+fn holding(name: &str, known: &[&str]) -> Option<String> {
+    let name = name.trim().to_lowercase();
+    if name.chars().count() < 3 {
+        return None;
+    }
+    let found: Vec<&str> = known
+        .iter()
+        .copied()
+        .filter(|known| known.to_lowercase().contains(&name))
+        .take(3)
+        .collect();
+    (!found.is_empty()).then(|| listed(&found))
 }

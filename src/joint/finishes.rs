@@ -75,6 +75,16 @@ fn roughness(record: &Record, collector: &mut Collector) -> Option<Bounds> {
                 }
                 return in_range(record, roughness.rq, collector);
             }
+            // A text with a number in it was meant as a roughness: `32 µin` lacks its parameter.
+            Err(unit) if text.contains(|letter: char| letter.is_ascii_digit()) => {
+                let told = fault(unit.code, &record.span("process"), unit.message)
+                    .expecting("expected a roughness or a process");
+                collector.report(match unit.help {
+                    Some(help) => told.help(help),
+                    None => told,
+                });
+                return None;
+            }
             _ => {
                 unknown_process(record, text, collector);
                 return None;

@@ -101,8 +101,14 @@ pub(super) fn apart(sites: &[Site], collector: &mut Collector) {
                 .map(|(point, span)| (site.land, *point, span))
         })
         .collect();
-    // Along x the neighbours of a bolt stand next to it, so that thousands of bolts are quick.
-    bolts.sort_by(|one, other| one.1[0].total_cmp(&other.1[0]));
+    // Along the longer side the neighbours of a bolt stand next to it, so that thousands of bolts
+    // are quick.
+    let spread = |axis: usize| {
+        let along = || bolts.iter().map(|bolt| bolt.1[axis]);
+        along().fold(f64::MIN, f64::max) - along().fold(f64::MAX, f64::min)
+    };
+    let axis = usize::from(spread(1) > spread(0));
+    bolts.sort_by(|one, other| one.1[axis].total_cmp(&other.1[axis]));
     let widest = bolts
         .iter()
         .flat_map(|(land, ..)| land.seats.into_iter().chain(land.holes))
@@ -110,7 +116,7 @@ pub(super) fn apart(sites: &[Site], collector: &mut Collector) {
         * 2.0;
     for (index, (land, point, span)) in bolts.iter().enumerate() {
         for (other, place, other_span) in &bolts[index + 1..] {
-            if place[0] - point[0] > widest || collector.is_full() {
+            if place[axis] - point[axis] > widest || collector.is_full() {
                 break;
             }
             let distance = (place[0] - point[0]).hypot(place[1] - point[1]);

@@ -79,6 +79,9 @@ fn base(record: &Record, name: &str, own: &Own, collector: &mut Collector) -> Op
     if let Some(material) = catalog::material(name) {
         return Some(material.clone());
     }
+    if collector.is_full() {
+        return None;
+    }
     let known = own
         .keys()
         .map(String::as_str)

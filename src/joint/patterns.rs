@@ -36,7 +36,10 @@ pub(super) fn read(
         collector.report(no_place(record, &record.span("at")));
         return None;
     }
-    if let Some(&[count]) = record.counts("count") {
+    if let Some(counts) = record.counts("count") {
+        let count: usize = counts
+            .iter()
+            .fold(1, |all, count| all.saturating_mul(*count));
         collector.require(count == places.len(), || {
             fault(
                 "fastener/count",

@@ -3,7 +3,7 @@
 use crate::{
     diagnostic::Fault,
     joint::{
-        collector::{Wording, fault},
+        collector::{MOST_FAULTS, Wording, fault},
         tree::{Span, short},
     },
 };
@@ -17,7 +17,7 @@ pub(super) fn faults(errors: &[toml::de::Error], text: &str) -> Vec<Fault> {
         let span = span.start.min(text.len())..span.end.min(text.len());
         let line = line_of(text, &span);
         // One slip often breaks a line in several ways; the first is the one to mend.
-        if !lines.contains(&line) {
+        if lines.len() < MOST_FAULTS && !lines.contains(&line) {
             faults.push(worded(error.message(), &span, text));
             lines.push(line);
         }

@@ -1,5 +1,6 @@
 //! Reads a tree by the description of its fields: structure, types, units, ranges.
 
+mod lists;
 mod scalars;
 
 use std::ops::RangeInclusive;
@@ -10,8 +11,7 @@ use crate::{
         MOST_PLACES,
         collector::{Collector, Wording, fault},
         fields::{Field, Kind, Measure, Need, SPREAD_KEYS, Section, listed},
-        record::{Entry, PerPlate, Point, Record, Value},
-        sections::default_name,
+        record::{Entry, Record, Value},
         tree::{Form, Key, Node, Span, short},
     },
 };
@@ -137,153 +137,6 @@ impl Walk<'_> {
         }
     }
 
-    fn records(&mut self, stated: Stated<'_>, section: &'static Section) -> Option<Vec<Record>> {
-        let nodes = match &stated.node.form {
-            Form::List(nodes) => nodes.as_slice(),
-            Form::Table(entries) if names_tables(entries, section) => {
-                self.collector.report(
-                    wrong_type(stated.node, &format!("`{}`", section.name), "a table")
-                        .expecting(format!("expected `[[{}]]`", section.name))
-                        .help(format!(
-                            "head each with `[[{}]]` and put its name inside: `name = \"{}\"`",
-                            section.name, entries[0].0.name
-                        )),
-                );
-                return None;
-            }
-            Form::Table(_) => std::slice::from_ref(stated.node),
-            _ => {
-                self.collector.report(
-                    wrong_type(stated.node, &format!("`{}`", section.name), "a table")
-                        .help(format!("head it with `[[{}]]`", section.name)),
-                );
-                return None;
-            }
-        };
-        if !self.few_enough(stated, nodes.len()) {
-            return None;
-        }
-        let mut records = Vec::with_capacity(nodes.len());
-        for (index, node) in nodes.iter().enumerate() {
-            let name = node.text_of("name").or(default_name(section, index));
-            let path = match name {
-                Some(name) => format!("{}.{name}", section.name),
-                None if nodes.len() == 1 => section.name.to_owned(),
-                None => format!("{}[{}]", section.name, index + 1),
-            };
-            if matches!(node.form, Form::Table(_)) {
-                records.extend(self.record(node, section, &path));
-            } else {
-                self.collector
-                    .report(wrong_type(node, &format!("`{}`", section.name), "a table"));
-            }
-        }
-        (records.len() == nodes.len()).then_some(records)
-    }
-
-    fn per_plate(&mut self, stated: Stated<'_>, measure: Measure) -> Option<PerPlate> {
-        match &stated.node.form {
-            Form::List(nodes) => self.two(stated, nodes, [measure; 2]).map(PerPlate::Each),
-            Form::Table(entries) => {
-                let mut named = Vec::with_capacity(entries.len());
-                for (key, node) in entries {
-                    let value = self.single(Stated { node, ..stated }, measure)?;
-                    named.push((key.name.clone(), key.span.clone(), value));
-                }
-                Some(PerPlate::Named(named))
-            }
-            _ => self.single(stated, measure).map(PerPlate::Both),
-        }
-    }
-
-    fn point(&mut self, stated: Stated<'_>) -> Option<Point> {
-        let length = Measure::Quantity(crate::units::Quantity::Length);
-        if let Form::List(nodes) = &stated.node.form {
-            self.two(stated, nodes, [length; 2])
-        } else {
-            self.wrong(stated);
-            None
-        }
-    }
-
-    fn points(&mut self, stated: Stated<'_>) -> Option<Vec<(Point, Span)>> {
-        let length = Measure::Quantity(crate::units::Quantity::Length);
-        // A single place may stand without its outer brackets.
-        if let Form::List(nodes) = &stated.node.form
-            && let [first, _] = nodes.as_slice()
-            && matches!(first.form, Form::Text(_))
-        {
-            let point = self.two(stated, nodes, [length; 2])?;
-            return Some(vec![(point, stated.node.span.clone())]);
-        }
-        self.pairs(stated, [length; 2])
-    }
-
-    fn pairs(&mut self, stated: Stated<'_>, measures: [Measure; 2]) -> Option<Vec<(Point, Span)>> {
-        let Form::List(nodes) = &stated.node.form else {
-            self.wrong(stated);
-            return None;
-        };
-        if !self.few_enough(stated, nodes.len()) {
-            return None;
-        }
-        let mut pairs = Vec::with_capacity(nodes.len());
-        for node in nodes {
-            let item = Stated { node, ..stated };
-            if let Form::List(parts) = &node.form {
-                pairs.extend(
-                    self.two(item, parts, measures)
-                        .map(|pair| (pair, node.span.clone())),
-                );
-            } else {
-                self.wrong(item);
-            }
-        }
-        (pairs.len() == nodes.len()).then_some(pairs)
-    }
-
-    fn two(&mut self, stated: Stated<'_>, nodes: &[Node], measures: [Measure; 2]) -> Option<Point> {
-        let [first, second] = nodes else {
-            self.collector.report(
-                fault(
-                    "file/wrong-type",
-                    &stated.node.span,
-                    format!(
-                        "`{}` has {} values here; it takes two",
-                        stated.field.key,
-                        nodes.len()
-                    ),
-                )
-                .expecting("two values")
-                .help(format!("for example `{}`", stated.field.line())),
-            );
-            return None;
-        };
-        let first = self.single(
-            Stated {
-                node: first,
-                ..stated
-            },
-            measures[0],
-        );
-        let second = self.single(
-            Stated {
-                node: second,
-                ..stated
-            },
-            measures[1],
-        );
-        Some([first?, second?])
-    }
-
-    fn few_enough(&mut self, stated: Stated<'_>, count: usize) -> bool {
-        if count > MOST_PLACES {
-            self.collector
-                .report(too_many(stated.field.key, &stated.node.span, count));
-        }
-        count <= MOST_PLACES
-    }
-
     /// Tells of an unknown key; returns the field of this table that was probably meant.
     fn unknown(&mut self, key: &Key, section: &Section) -> Option<&'static Field> {
         let told = fault(
@@ -292,6 +145,9 @@ impl Walk<'_> {
             format!("unknown key `{}`", short(&key.name)),
         )
         .expecting("not a key of this table");
+        if self.collector.is_full() {
+            return None;
+        }
         if let Some(place) = home(&key.name, section) {
             self.collector
                 .report(told.help(format!("`{}` belongs in {place}", key.name)));
@@ -351,14 +207,6 @@ fn wrong_type(node: &Node, what: &str, expected: &str) -> Fault {
         format!("{what} is {}", node.shown()),
     )
     .expecting(format!("expected {expected}"))
-}
-
-/// Whether a table holds only tables under names of their own: `[plate.upper]`.
-fn names_tables(entries: &[(Key, Node)], section: &Section) -> bool {
-    !entries.is_empty()
-        && entries.iter().all(|(key, node)| {
-            section.field(&key.name).is_none() && matches!(node.form, Form::Table(_))
-        })
 }
 
 /// The table of the file to which a misplaced key belongs.

@@ -116,10 +116,10 @@ impl<'a> Field<'a> {
         let cell = [0, 1].map(|k| share[k] * size[k] as f64 - 0.5);
         let home = [0, 1].map(|k| (cell[k].round() as i64).clamp(0, size[k] as i64 - 1));
         let border = self.borders[home[1] as usize * size[0] + home[0] as usize].as_ref();
-        if border.is_none() && self.kind(home) != Kind::Value {
-            return self.value(home);
-        }
-        let source = border.map_or(home, |border| self.partner(border, (share, cell), home));
+        let Some(border) = border else {
+            return self.smooth(cell, home);
+        };
+        let source = self.partner(border, (share, cell), home);
         let kind = self.kind(source);
         let own = self.value(source)?;
         let base = cell.map(|c| c.floor() as i64);
@@ -133,6 +133,20 @@ impl<'a> Field<'a> {
             }
         }
         Some(if weights > 1e-9 { sum / weights } else { own })
+    }
+
+    /// The value inside a region of one kind, where all four cells around a place have one.
+    fn smooth(&self, cell: [f64; 2], home: [i64; 2]) -> Option<f64> {
+        if self.kind(home) != Kind::Value {
+            return self.value(home);
+        }
+        let [left, low] = cell.map(f64::floor);
+        let (u, v) = (cell[0] - left, cell[1] - low);
+        let at = low as usize * self.map.size[0] + left as usize;
+        let lower = self.map.values.get(at..at + 2)?;
+        let upper = self.map.values.get(at + self.map.size[0]..)?;
+        let across = |row: &[f64]| row[0] + u * (row[1] - row[0]);
+        Some(across(lower) + v * (across(upper.get(..2)?) - across(lower)))
     }
 
     /// The nearest cell whose centre lies on the same side of every parting edge as the place.
