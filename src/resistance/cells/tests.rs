@@ -156,7 +156,7 @@ fn overlapping_contacts_add_their_pressures() {
         .sum();
     // Holes on a grid of 0.05 mm, and 48 patches a turn.
     assert!(
-        (path.contact / counted - 1.0).abs() < 3e-3,
+        (path.contact / counted - 1.0).abs() < 1e-3,
         "{} {counted}",
         path.contact
     );
