@@ -126,13 +126,13 @@ mod tests {
 
     #[test]
     fn a_floating_chain_is_refused() {
-        let mut floating = Ladder::new(3);
+        let mut floating = Ladder::new(6);
         // Links whose sums round: the last pivot is not exactly zero.
-        for (rung, link) in [0.1, 0.7].into_iter().enumerate() {
+        for (rung, link) in [0.1, 0.7, 0.3, 1.9, 0.13].into_iter().enumerate() {
             floating.link(rung, 0, link);
             floating.link(rung, 1, link);
         }
         floating.rungs[0][2] += 1.0;
-        assert_eq!(floating.solution(vec![[1.0, 0.0]; 3]), None);
+        assert_eq!(floating.solution(vec![[1.0, 0.0]; 6]), None);
     }
 }

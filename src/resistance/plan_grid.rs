@@ -306,7 +306,7 @@ impl PlanGrid {
     /// The resistances under a load, with the heat free to choose its way through the plates.
     ///
     /// Contact, lower and upper bound are those of the cells.
-    /// Checked: `plan_grid_gives_the_slab_and_the_round_joint`, `plan_grid_meets_the_reference_cases`.
+    /// Checked: `round_joint_agrees_with_the_ring_network`, `plan_grid_meets_the_reference_cases`.
     pub fn solve<H: Fn(f64) -> f64>(&self, load: &Load<H>) -> Path {
         let whole = self.whole(load, &self.conductance(load));
         let perfect = self.whole(load, &vec![f64::INFINITY; self.columns.patch_area.len()]);

@@ -109,6 +109,60 @@ fn equal_cells_are_told_once_and_share_the_heat() {
 }
 
 #[test]
+fn cells_that_differ_in_their_heat_alone_are_told_apart() {
+    let mut plan = case_i();
+    plan.source.zone = Zone::Rectangle {
+        centre: [0.03, 0.04],
+        size: [0.04, 0.04],
+    };
+    let like: Vec<usize> = cells(&plan).fine.iter().map(|cell| cell.like).collect();
+    // Bolts 0 and 2 are mirrored in the middle line along x, and so are 1 and 3.
+    assert_eq!(like, [0, 1, 0, 1]);
+}
+
+#[test]
+fn an_isothermal_source_is_the_hottest_place() {
+    let mut plan = case_i();
+    plan.source.isothermal = true;
+    let path = cells(&plan).solve(&load(power_law, &[5000.0; 4], &[0.0; 4]));
+    assert!((path.hottest / path.source_to_sink - 1.0).abs() < 1e-12);
+}
+
+#[test]
+fn film_drop_is_that_of_the_whole_second_plate() {
+    let cells = cells(&crowded(&CROWD));
+    let path = cells.solve(&load(power_law, &[3000.0; 4], &[0.0; 4]));
+    let exact = 1.0 / (800.0 * (PI * 0.05 * 0.05 - 4.0 * PI * 2.25e-3_f64.powi(2)));
+    assert!((path.coolant_drop.unwrap() / exact - 1.0).abs() < 1e-12);
+}
+
+#[test]
+fn overlapping_contacts_add_their_pressures() {
+    let cells = cells(&crowded(&[[0.02, 0.02], [0.029, 0.021]]));
+    assert_eq!(cells.overlaps, [true, true]);
+    let forces = [3000.0, 5000.0];
+    // A law that rises with the square of the pressure tells where the pressures are.
+    let square = |pressure: f64| (1e-6 * pressure).powi(2);
+    let path = cells.solve(&load(square, &forces, &[0.0; 2]));
+    let side = 0.5 * STEP;
+    let counted: f64 = (0..800 * 1000)
+        .map(|index| {
+            let point = [
+                (f64::from(index % 1000) + 0.5) * side,
+                (f64::from(index / 1000) + 0.5) * side,
+            ];
+            square(cells.pressure_at(point, &forces).unwrap_or(0.0)) * side * side
+        })
+        .sum();
+    // Holes on a grid of 0.05 mm, and 48 patches a turn.
+    assert!(
+        (path.contact / counted - 1.0).abs() < 1e-3,
+        "{} {counted}",
+        path.contact
+    );
+}
+
+#[test]
 fn order_of_the_bolts_changes_nothing() {
     let forces = [3000.0, 2500.0, 4000.0, 3500.0];
     let shanks = [0.0, 0.1, 0.2, 0.3];
@@ -158,6 +212,8 @@ fn round_joint_lies_between_its_bounds_with_and_without_shank() {
     assert_eq!(bolted.resistance_upper, bare.resistance_upper);
     assert!(bolted.resistance_lower < bolted.source_to_sink);
     assert!(bolted.source_to_sink < bare.source_to_sink);
+    let beside = bare.resistance_lower.recip() + 2.0;
+    assert!((bolted.resistance_lower * beside - 1.0).abs() < 1e-12);
     // The shank is no part of the faying faces.
     assert!((bolted.contact / bare.contact - 1.0).abs() < 1e-14);
 }

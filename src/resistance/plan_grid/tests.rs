@@ -26,7 +26,7 @@ fn uniform_conductance_over_equal_plates_is_a_slab() {
 fn round_joint_agrees_with_the_ring_network() {
     let cells = cells(&round(400));
     for gap in [0.0, 5000.0] {
-        let load = load(|p| power_law(p) + gap, &[2000.0], &[0.5]);
+        let load = load(|p| power_law(p) + gap, &[2000.0], &[20.0]);
         let (rings, grid) = (cells.solve(&load), plan_grid(&cells, 2.0).solve(&load));
         // Square cells on a circle, 0.5 mm in the contact.
         assert_same(&rings, &grid, 3e-3);
@@ -46,6 +46,20 @@ fn held_rim_agrees_with_the_ring_network() {
         (rings.source_to_sink / grid.source_to_sink - 1.0).abs() < 0.02,
         "{rings:?} {grid:?}"
     );
+}
+
+#[test]
+fn grid_carries_the_force_of_every_bolt() {
+    let grid = plan_grid(&cells(&crowded(&CROWD)), 1.0);
+    for bolt in 0..4 {
+        let mut forces = [0.0; 4];
+        forces[bolt] = 3000.0;
+        let areas = grid.columns.patch_area.iter().enumerate();
+        let carried: f64 = areas
+            .map(|(patch, area)| area * grid.patches.pressure(patch, &forces))
+            .sum();
+        assert!((carried / 3000.0 - 1.0).abs() < 1e-12);
+    }
 }
 
 #[test]
