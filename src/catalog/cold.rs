@@ -227,7 +227,7 @@ impl Grade {
 #[cfg(test)]
 mod tests {
 
-    use crate::catalog::{grade, material, materials};
+    use crate::catalog::{grade, grades, material, materials};
 
     /// Relative deviation from an expected value.
     fn off(found: f64, expected: f64) -> f64 {
@@ -287,6 +287,10 @@ mod tests {
             // The parts are sums of the same few numbers.
             assert!((parts - between(350.0, 4.0)).abs() < 1e-12, "{name}");
         }
+        // Nothing contracts any more below 4 K: copper keeps its 0.324 %.
+        let copper = material("Cu OFHC").unwrap();
+        let found = copper.contraction_between(293.0, 1.5).unwrap();
+        assert!((found + 0.00324).abs() < 1e-9);
         // Published tables of integrated contraction, from memory; 77 K is an entry.
         let aluminium = material("Al 6061-T6").unwrap();
         let found = aluminium.contraction_between(293.0, 77.0).unwrap();
@@ -336,5 +340,16 @@ mod tests {
         // Iron, from memory: 0.190 % to 77 K.
         let found = bolt.contraction_between(293.0, 77.0).unwrap();
         assert!((found + 0.0019).abs() < 1e-9);
+    }
+
+    #[test]
+    fn bolts_are_like_a_material_of_their_own_kind() {
+        for bolt in grades() {
+            let like = material(&bolt.like).unwrap();
+            // Grades of one kind of steel differ by less than a tenth; copper for stainless would not pass.
+            let conductivity = off(bolt.conductivity.value, like.conductivity.value);
+            let expansion = off(bolt.expansion, like.expansion.value);
+            assert!(conductivity < 0.10 && expansion < 0.10, "{}", bolt.name);
+        }
     }
 }

@@ -194,6 +194,7 @@ fn a_name_given_twice_is_refused() {
 
 #[test]
 fn a_key_nobody_reads_and_a_name_nobody_bears_are_refused() {
+    assert_eq!(swapped("\nname = ", "\nlucky = 7\nname = "), 8);
     // Six files give status inside a value, the others on a line of its own.
     assert_eq!(swapped("value = ", "lucky = 7, value = "), 6);
     assert_eq!(swapped("\nstatus = ", "\nlucky = 7\nstatus = "), 8);

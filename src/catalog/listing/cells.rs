@@ -87,6 +87,8 @@ mod tests {
     fn numbers_keep_four_digits_and_no_dust() {
         for (value, text) in [
             (167.0, "167"),
+            (23.636, "23.64"),
+            (0.0, "0"),
             (0.1 + 0.2, "0.3"),
             (1131.6, "1132"),
             (16_400.0, "16400"),
