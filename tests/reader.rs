@@ -462,6 +462,13 @@ fn the_order_of_tables_does_not_matter() {
 }
 
 #[test]
+fn line_ends_and_byte_order_marks_do_not_matter() {
+    let joint = read(FULL);
+    assert_eq!(read(&FULL.replace('\n', "\r\n")), joint);
+    assert_eq!(read(&format!("\u{feff}{FULL}")), joint);
+}
+
+#[test]
 fn overrides_act_on_any_field() {
     let text = plain();
     let sets = [
