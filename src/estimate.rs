@@ -125,8 +125,10 @@ pub enum Failure {
 /// The chain at nominal inputs: every result without a band.
 pub fn nominal(chain: &Chain, options: &Options) -> Result<Estimate, Failure> {
     let joint = chain.joint();
+    let first = chain.state(0, &Realisation::default())?;
+    let error = chain.discretisation_error(&first);
     let cases = (0..joint.service.cases.len())
-        .map(|case| case_result(chain, case))
+        .map(|case| case_result(chain, case, error))
         .collect::<Result<Vec<CaseResult>, Failure>>()?;
     let (source_plane, sink_plane) = planes(joint);
     Ok(Estimate {
@@ -145,11 +147,16 @@ pub fn nominal(chain: &Chain, options: &Options) -> Result<Estimate, Failure> {
 }
 
 /// One thermal case, upstream first: force, pressure, conductance, resistance, temperature.
-fn case_result(chain: &Chain, case: usize) -> Result<CaseResult, Failure> {
+fn case_result(chain: &Chain, case: usize, numerical_error: f64) -> Result<CaseResult, Failure> {
     let joint = chain.joint();
     let named = &joint.service.cases[case];
     let state = chain.state(case, &Realisation::default())?;
-    let open = state.conditions.forces.iter().filter(|force| **force <= 0.0).count();
+    let open = state
+        .conditions
+        .forces
+        .iter()
+        .filter(|force| **force <= 0.0)
+        .count();
     if open > 0 {
         return Err(Failure::Open {
             bolts: open,
@@ -168,7 +175,7 @@ fn case_result(chain: &Chain, case: usize) -> Result<CaseResult, Failure> {
         results: results(path),
         resistance_lower: Some(path.resistance_lower),
         resistance_upper: path.resistance_upper,
-        numerical_error: chain.discretisation_error(&state),
+        numerical_error,
         footprint: chain.footprint(),
         rise: joint.service.heat.map(|heat| Rise {
             source: Band::nominal(heat * path.source_to_sink),

@@ -52,7 +52,7 @@ pub struct Estimate {
     /// Print one JSON object per file, in SI
     #[arg(long)]
     json: bool,
-    /// Exit with 3 when there are cautions
+    /// Exit with 3 when a caution speaks of this joint
     #[arg(long)]
     strict: bool,
 }
@@ -132,7 +132,7 @@ impl Estimate {
         match found {
             Ok((estimate, rings)) => {
                 self.tell(&source.name, (&estimate, &rings), console)?;
-                Ok(if self.strict && !estimate.cautions.is_empty() {
+                Ok(if self.strict && estimate.has_cautions() {
                     Outcome::Cautioned
                 } else {
                     Outcome::Done

@@ -81,6 +81,7 @@ fn kind(kind: Kind) -> &'static str {
         Kind::Caution(Gravity::Grave) => "grave caution",
         Kind::Caution(Gravity::Range) => "caution, out of range",
         Kind::Caution(Gravity::Note) => "caution",
+        Kind::Caution(Gravity::Standing) => "caution that goes with every estimate",
         Kind::Law => "law",
     }
 }

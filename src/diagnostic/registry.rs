@@ -44,6 +44,8 @@ pub enum Gravity {
     Range,
     /// Worth knowing when the number is used.
     Note,
+    /// A duty of care that goes with every result; says nothing of this joint.
+    Standing,
 }
 
 /// One code.
@@ -184,8 +186,10 @@ mod tests {
         unit/not-a-quantity value/range value/min-above-max name/unknown plate/hole-outside
         plate/holes-overlap plate/hole-too-small plate/head-beyond-edge plate/no-overlap
         fastener/count fastener/no-place zone/outside service/cold-contact material/cold-data
-        set/bad-override
-        preload/friction-scatter preload/over-yield preload/over-90-percent preload/over-proof
+        set/bad-override file/conflict file/too-many value/not-rising contact/beyond-cone
+        plate/count plate/misplaced plate/not-round plate/heads-overlap fastener/no-seat
+        material/missing-property
+        preload/temperature-not-acting preload/friction-scatter preload/over-yield preload/over-90-percent preload/over-proof
         preload/head-pressure preload/short-engagement preload/low-use preload/suspicious-torque
         preload/running-torque preload/no-yield-strength preload/countersunk
         preload/never-for-conductance preload/no-torque-card preload/slip-and-fatigue

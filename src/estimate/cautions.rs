@@ -102,19 +102,14 @@ fn preload_cautions(chain: &Chain) -> Vec<Caution> {
 
 fn resistance_cautions(chain: &Chain, cases: &[CaseResult]) -> Vec<Caution> {
     let mut found = Vec::new();
-    let bolts = chain.cones().len();
     if cases
         .first()
         .is_some_and(|case| case.resistance_upper.is_none())
     {
-        let several = if bolts > 1 {
-            "each bolt's cell is solved alone and passes no heat to its neighbours"
-        } else {
-            "the cell of the bolt is taken as a circle of equal area"
-        };
         found.push(caution(
             "resistance/cell",
-            format!("{several}; the cell ignores what lies between the bolts, and only the lower bound is proved"),
+            "the plates are taken as sheets on a plan grid and the pressure from each bolt's own cone: on two joints \
+             solved in full this read 5 and 9 % high in vacuum; no upper bound is proved",
         ));
     }
     if let Some(case) = cases.first() {

@@ -1,7 +1,10 @@
 //! What the chain found: plain results, upstream first.
 
 use crate::{
-    diagnostic::{Assumption, Caution},
+    diagnostic::{
+        Assumption, Caution,
+        registry::{self, Gravity},
+    },
     joint::{Limit, RequirementKind},
 };
 
@@ -198,6 +201,15 @@ pub struct Estimate {
     pub cautions: Vec<Caution>,
     /// What the file did not state.
     pub assumptions: Vec<Assumption>,
+}
+
+impl Estimate {
+    /// Whether a caution speaks of this joint, beyond the duties of care that go with every one.
+    pub fn has_cautions(&self) -> bool {
+        self.cautions
+            .iter()
+            .any(|caution| registry::gravity(caution.code) != Gravity::Standing)
+    }
 }
 
 /// One torque of a sweep.

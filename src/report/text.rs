@@ -3,7 +3,7 @@
 use crate::{
     diagnostic::{
         Assumption, Caution,
-        registry::{Gravity, gravity},
+        registry::{Gravity, entry, gravity},
     },
     estimate::{BoltResult, CaseResult, Estimate, RingRow},
     report::{
@@ -183,9 +183,15 @@ pub fn cautions(cautions: &[Caution], detail: Detail) -> String {
         "cautions ({}), grave first; ringsum explain CODE tells what to do\n",
         cautions.len()
     );
-    let (grave, others): (Vec<&Caution>, Vec<&Caution>) = cautions
-        .iter()
-        .partition(|caution| gravity(caution.code) == Gravity::Grave);
+    let of = |wanted: &[Gravity]| -> Vec<&Caution> {
+        cautions
+            .iter()
+            .filter(|caution| wanted.contains(&gravity(caution.code)))
+            .collect()
+    };
+    let grave = of(&[Gravity::Grave]);
+    let others = of(&[Gravity::Range, Gravity::Note]);
+    let standing = of(&[Gravity::Standing]);
     let line = |caution: &Caution| format!("{}: {}", caution.code, plain(&caution.text));
     let whole = |caution: &Caution| wrapped(&line(caution), WIDTH - 2, 2).replace('\n', "\n  ");
     for caution in grave {
@@ -193,9 +199,10 @@ pub fn cautions(cautions: &[Caution], detail: Detail) -> String {
     }
     match detail {
         Detail::Full => {
-            for caution in others {
+            for caution in others.into_iter().chain(standing) {
                 let _ = writeln!(text, "  {}", whole(caution));
             }
+            return text;
         }
         Detail::Screen => {
             for caution in others {
@@ -210,7 +217,25 @@ pub fn cautions(cautions: &[Caution], detail: Detail) -> String {
             }
         }
     }
+    text.push_str(&always(&standing));
     text
+}
+
+/// The duties of care that go with every result, in one sentence.
+fn always(standing: &[&Caution]) -> String {
+    let mut codes: Vec<&str> = standing.iter().map(|caution| caution.code).collect();
+    codes.sort_unstable();
+    codes.dedup();
+    let told: Vec<String> = codes
+        .into_iter()
+        .filter_map(entry)
+        .map(|entry| format!("{} ({})", entry.title, entry.code))
+        .collect();
+    if told.is_empty() {
+        return String::new();
+    }
+    let line = format!("with every estimate: {}", told.join("; "));
+    format!("  {}\n", wrapped(&line, WIDTH - 2, 2).replace('\n', "\n  "))
 }
 
 /// Assumptions: counted, with their values, or with their values and reasons.

@@ -9,7 +9,7 @@ use crate::{
     numerics::block_grid::Sheets,
     resistance::{
         cells::{Cells, Plan},
-        column::{Columns, Coupling, Flow, Inlet},
+        column::{Columns, Coupling, Flow, Inlet, Plates},
         path::{Load, Path, Whole},
         rings::Patches,
     },
@@ -308,14 +308,21 @@ impl PlanGrid {
     /// Contact, lower and upper bound are those of the cells.
     /// Checked: `round_joint_agrees_with_the_ring_network`, `plan_grid_meets_the_reference_cases`.
     pub fn solve<H: Fn(f64) -> f64>(&self, load: &Load<H>) -> Path {
-        let whole = self.whole(load, &self.conductance(load));
-        let perfect = self.whole(load, &vec![f64::INFINITY; self.columns.patch_area.len()]);
+        let conductance = self.conductance(load);
+        let met = vec![f64::INFINITY; conductance.len()];
+        let plates = self.cells.plates(load);
+        // The two systems know nothing of each other, so both cores can have one.
+        let (whole, perfect) = rayon::join(
+            || self.whole(&plates, &conductance),
+            || self.whole(&plates, &met),
+        );
         self.cells.path(load, &whole, &perfect)
     }
 
     /// Source to sink alone, K/W: what a comparison of two grids needs.
     pub fn source_to_sink<H: Fn(f64) -> f64>(&self, load: &Load<H>) -> f64 {
-        self.whole(load, &self.conductance(load)).source - self.cells.film_drop()
+        let plates = self.cells.plates(load);
+        self.whole(&plates, &self.conductance(load)).source - self.cells.film_drop()
     }
 
     fn conductance<H: Fn(f64) -> f64>(&self, load: &Load<H>) -> Vec<f64> {
@@ -332,13 +339,12 @@ impl PlanGrid {
         conductance
     }
 
-    fn whole<H>(&self, load: &Load<H>, conductance: &[f64]) -> Whole {
-        self.flow(load, conductance)
+    fn whole(&self, plates: &Plates, conductance: &[f64]) -> Whole {
+        self.flow(plates, conductance)
             .map_or(Whole::BLOCKED, |flow| self.cells.whole_of(&flow))
     }
 
-    fn flow<H>(&self, load: &Load<H>, conductance: &[f64]) -> Option<Flow> {
-        let plates = self.cells.plates(load);
+    fn flow(&self, plates: &Plates, conductance: &[f64]) -> Option<Flow> {
         let constants = plates.constants();
         let count = self.columns.count();
         let couplings: Vec<Coupling> = (0..count)

@@ -120,4 +120,30 @@ pub(super) const ENTRIES: &[Entry] = &[
          place that the file may have, and its value must be TOML.",
         "Write it such as `--set plate.upper.thickness=\"6 mm\"`; inside a shell, quote the whole.",
     ),
+    fault(
+        "file/conflict",
+        "Two statements that exclude each other",
+        "Two keys say the same thing in two ways, such as `torque` and `preload`, or `size` and `diameter`: \
+         one of them would have to be passed over in silence.",
+        "Keep one of the two.",
+    ),
+    fault(
+        "file/too-many",
+        "More entries than this version reads",
+        "A joint takes at most 10 000 bolts, and a list at most 10 000 entries.",
+        "Check the count of the pattern; estimate one cell of a very large field of bolts.",
+    ),
+    fault(
+        "value/not-rising",
+        "A table whose first values do not rise",
+        "Between the points of a table the value is interpolated, so the pressures must rise, each standing once.",
+        "List the points from the lowest pressure to the highest.",
+    ),
+    fault(
+        "contact/beyond-cone",
+        "A choice that the closed-form cone does not know",
+        "The cone stands for a uniform head, frictionless faces and hard contact; other choices need the \
+         elastic solution of the whole joint.",
+        "Leave `head_model`, `faces` and `compliance` out of [contact].",
+    ),
 ];

@@ -1,4 +1,4 @@
-//! Faults of geometry: plates, holes, fasteners and zones that cannot be.
+//! Faults of the joint itself: plates, holes, fasteners, zones and materials that cannot be.
 
 use crate::diagnostic::registry::{Entry, fault};
 
@@ -78,5 +78,41 @@ pub(super) const ENTRIES: &[Entry] = &[
          coefficient tends to zero. A room-temperature value is not extended.",
         "Choose a material with a low-temperature fit, or give conductivity and integrated \
          contraction at the service temperature in the file.",
+    ),
+    fault(
+        "plate/count",
+        "Not two plates",
+        "This version reads two plates, the warm one first.",
+        "Join two plates at a time. A shim between them is a [filler] of model \"layer\".",
+    ),
+    fault(
+        "plate/misplaced",
+        "A key of the other plate",
+        "Heat enters the first plate and leaves the second, and `offset` says where the first lies on the second.",
+        "Put `heated` into the first [[plate]], `cooled` and `offset` into the second.",
+    ),
+    fault(
+        "plate/not-round",
+        "A rim asked of a plate that is not round",
+        "Cooling at the rim is defined for round plates.",
+        "Cool the back of a rectangular plate: `cooled = { film = \"500 W/(m²·K)\" }` or `{ face = \"isothermal\" }`.",
+    ),
+    fault(
+        "plate/heads-overlap",
+        "Two heads, washers or nuts overlap",
+        "Two seats need the same place on a plate, so that one of the bolts cannot be fitted.",
+        "Move the bolts apart, or take smaller heads or washers.",
+    ),
+    fault(
+        "fastener/no-seat",
+        "The head finds no land to press on",
+        "The hole is as large as the seat of the head or nut, or the catalogue has no seat for this thread.",
+        "Take a smaller hole or a washer, or state the outer diameter of the seat: `bearing = \"8.5 mm\"`.",
+    ),
+    fault(
+        "material/missing-property",
+        "A property that bare contact needs is not known",
+        "The conductance of bare spots goes with the hardness of the softer face; this material has none.",
+        "State `hardness` (Meyer, about 1.08 times the Vickers number in MPa × 9.81) or `microhardness`, fill the joint, or give `[measured]`.",
     ),
 ];

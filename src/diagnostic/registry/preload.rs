@@ -2,7 +2,7 @@
 
 use crate::diagnostic::registry::{
     Entry,
-    Gravity::{Grave, Note, Range},
+    Gravity::{Grave, Note, Range, Standing},
 };
 
 pub(super) const ENTRIES: &[Entry] = &[
@@ -142,7 +142,7 @@ pub(super) const ENTRIES: &[Entry] = &[
              faces gain far more than torque does.",
         ],
     ),
-    Grave.entry(
+    Standing.entry(
         "preload/no-torque-card",
         "The largest torque is an estimate, not a torque card",
         [
@@ -153,7 +153,7 @@ pub(super) const ENTRIES: &[Entry] = &[
              standard, tests on the real stack and a responsible, qualified engineer.",
         ],
     ),
-    Grave.entry(
+    Standing.entry(
         "preload/slip-and-fatigue",
         "Slip and fatigue are not checked",
         [
@@ -219,6 +219,16 @@ pub(super) const ENTRIES: &[Entry] = &[
              0.41 % to 4 K, stainless steel 0.30 % (from memory).",
             "Lengthen the grip, add washers of low expansion (or disc springs), choose a bolt \
              material nearer to the plates, or raise the initial clamp force within its limits.",
+        ],
+    ),
+    Range.entry(
+        "preload/temperature-not-acting",
+        "Service far from assembly, and the clamp force stays",
+        [
+            "Bolt and plates expand differently, so the clamp force at service temperature differs \
+             from that at assembly. A plain service temperature does not move the force; only the \
+             cases hot and cold do.",
+            "State `temperature = { hot = …, cold = …, assembly = … }` to let expansion act.",
         ],
     ),
 ];
