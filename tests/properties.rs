@@ -41,7 +41,11 @@ fn with_roughness(mut joint: Joint, factor: f64) -> Joint {
 }
 
 proptest! {
-    #![proptest_config(ProptestConfig::with_cases(24))]
+    #![proptest_config(ProptestConfig {
+        cases: 24,
+        failure_persistence: None,
+        ..ProptestConfig::default()
+    })]
 
     /// Wherever the bolts stand, also where edges and neighbours cut their fields.
     #[test]
@@ -89,9 +93,10 @@ proptest! {
             moved.fasteners[0].places.reverse();
         }
         let [one, other] = [state(&joint).path, state(&moved).path];
-        // Sums over bolts in another order: rounding alone.
-        prop_assert!((one.source_to_sink / other.source_to_sink - 1.0).abs() < 1e-12);
+        // Sums over bolts in another order: rounding alone. The plan grid is solved to a residual
+        // of 1e-8, so rounding may end it a round earlier or later.
         prop_assert!((one.contact / other.contact - 1.0).abs() < 1e-12);
+        prop_assert!((one.source_to_sink / other.source_to_sink - 1.0).abs() < 1e-6);
     }
 }
 

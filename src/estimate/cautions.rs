@@ -109,7 +109,7 @@ fn resistance_cautions(chain: &Chain, cases: &[CaseResult]) -> Vec<Caution> {
         found.push(caution(
             "resistance/cell",
             "the plates are taken as sheets on a plan grid and the pressure from each bolt's own cone: on two joints \
-             solved in full this read 5 and 9 % high in vacuum; no upper bound is proved",
+             solved in full this read 6 and 10 % high in vacuum; no upper bound is proved",
         ));
     }
     if let Some(case) = cases.first() {

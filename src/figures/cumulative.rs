@@ -102,7 +102,7 @@ pub(super) fn draw(plot: &CumulativePlot) -> Result<Sheet, FigureError> {
             });
         }
     }
-    let flags = Flags::arranged(marks, [MARGIN, WIDTH - MARGIN]);
+    let flags = Flags::arranged(marks, [left, WIDTH - MARGIN]);
     let top = top + flags.height() + 8.0;
     let frame = Frame {
         left,

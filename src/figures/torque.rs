@@ -65,7 +65,8 @@ pub(super) fn draw(sweep: &TorqueSweep) -> Result<Sheet, FigureError> {
 
     let flags = Flags::arranged(
         torque_flags(sweep, &x_axis, &across)?,
-        [MARGIN, WIDTH - MARGIN],
+        // Not over the numbers of the upright axis, whose topmost stands as high as a label.
+        [left, WIDTH - MARGIN],
     );
     let mut sheet = Sheet::new(WIDTH);
     let subtitle = format!("resistance against the torque of {}", sweep.group);

@@ -12,9 +12,6 @@ use crate::{
     },
 };
 
-/// Young's modulus of washers, Pa: steel.
-const WASHER_MODULUS: f64 = 205e9;
-
 /// What the clamp force of one fastener passes through.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Stack {
@@ -174,8 +171,9 @@ fn parts_compliance(joint: &Joint, fastener: &Fastener, plates: &[(usize, f64)])
         },
     };
     // Pressure over the seat per force is one over its area.
-    let washers =
-        fastener.washer_thickness / WASHER_MODULUS * seat_pressure(&fastener.head_seat, 1.0);
+    // Washers are taken to be of the bolt's material.
+    let washers = fastener.washer_thickness / fastener.grade.youngs_modulus
+        * seat_pressure(&fastener.head_seat, 1.0);
     washers + stack_compliance(&clamped, &layers)
 }
 

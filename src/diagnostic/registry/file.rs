@@ -125,7 +125,7 @@ pub(super) const ENTRIES: &[Entry] = &[
         "Two statements that exclude each other",
         "Two keys say the same thing in two ways, such as `torque` and `preload`, or `size` and `diameter`: \
          one of them would have to be passed over in silence.",
-        "Keep one of the two.",
+        "Keep the one you mean and take the other out.",
     ),
     fault(
         "file/too-many",

@@ -324,7 +324,7 @@ pub(super) const ENTRIES: &[Entry] = &[
     Law {
         equation: "q (1/h + z₁/3 + z₂/3) + q_t z₁/6 + q_b z₂/6 = T₁ − T₂,   z = t/k",
         range: "several bolts; plates thin against the distance between bolts",
-        source: "construction of this program (axial flux linear through each plate); 5 and 9 % high \
+        source: "construction of this program (axial flux linear through each plate); 6 and 10 % high \
                  on two joints solved in three dimensions",
     }
     .entry(

@@ -85,7 +85,7 @@ pub(super) const ENTRIES: &[Entry] = &[
              heat passes freely between bolts. The pressure field still comes from each bolt's own \
              cone: it knows neither the gap that opens between bolts nor what lies there. Against \
              two reference joints solved in three dimensions (four M5 and six M4, vacuum) source to \
-             sink reads 5 and 9 % high; in gas the open gap, which is missing, matters more. Rings \
+             sink reads 6 and 10 % high; in gas the open gap, which is missing, matters more. Rings \
              and draws use each bolt's nearest-bolt cell, brought to the grid's level.",
             "Good for design; where a few per cent or a gas gap decide, solve the whole joint.",
         ],
