@@ -4,6 +4,7 @@
 //! that does not depend on pressure, and the [`Local`] it returns answers for one pressure at a
 //! time.
 
+mod curve;
 pub mod filler;
 pub mod film;
 pub mod flatness;
@@ -13,6 +14,7 @@ mod local;
 pub mod radiation;
 pub mod spots;
 
+pub use curve::Curve;
 pub use gas::GapGas;
 pub use interface::{Face, Hardness, Interface, Layer};
 pub use local::{Conductance, Local};

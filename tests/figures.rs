@@ -89,7 +89,7 @@ fn sweep() -> TorqueSweep {
         group: "M4 socket, 6 places".into(),
         stated: 2.2,
         largest: Some((2.9, "yield of the bolt")),
-        best: 2.8,
+        best: Some(2.8),
         points: (1..=16)
             .map(|k| {
                 let torque = f64::from(k) / 4.0;

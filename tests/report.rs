@@ -463,7 +463,7 @@ fn torque_sweep() -> TorqueSweep {
         group: "M4 socket, 6 places".to_owned(),
         stated: 1.7,
         largest: Some((2.04, "yield of the bolt")),
-        best: 1.0,
+        best: Some(1.0),
         points: vec![point(1.0, 0.1), point(1.6, 0.11), point(2.2, 0.12)],
         required: Some((0.115, Limit::Most)),
         cautions: Vec::new(),
@@ -497,7 +497,7 @@ fn a_torque_sweep_marks_the_stated_the_best_and_what_strength_forbids() {
 fn a_torque_beyond_strength_is_never_called_best() {
     let mut rising = torque_sweep();
     rising.points[2].source_to_sink.nominal = 0.01;
-    rising.best = 2.2;
+    rising.best = Some(2.2);
     let report = sweep::torque(&rising);
     assert!(report.contains("best     1.000 N·m"), "{report}");
     assert_eq!(json::torque(&rising)["best_within_strength"], json!(1.0));

@@ -81,29 +81,28 @@ fn bolts(joint: &Joint, nominal: &Estimate) -> Vec<PlanBolt> {
         .collect()
 }
 
-/// One curve for all bolts whose rings are the same.
+/// Share of a bolt's conductance below which two curves lie on each other in print.
+const ONE_LINE: f64 = 0.005;
+
+/// One curve for all bolts whose curves lie on each other.
 fn curves(rings: &[Vec<RingRow>]) -> Vec<Curve> {
-    let mut groups: Vec<(usize, usize)> = Vec::new();
-    for (index, table) in rings.iter().enumerate() {
+    let mut groups: Vec<Vec<usize>> = Vec::new();
+    for index in 0..rings.len() {
         match groups
             .iter_mut()
-            .find(|(first, _)| like(&rings[*first], table))
+            .find(|group| alike(&rings[group[0]], &rings[index]))
         {
-            Some((_, count)) => *count += 1,
-            None => groups.push((index, 1)),
+            Some(group) => group.push(index),
+            None => groups.push(vec![index]),
         }
     }
     groups
         .into_iter()
-        .map(|(first, count)| {
-            let table = gathered(&rings[first]);
+        .map(|group| {
+            let table = &rings[group[0]];
             let hole = table.first().map(|ring| (ring.radius[0], 0.0));
             Curve {
-                label: match count {
-                    1 => format!("bolt {}", first + 1),
-                    _ if count == rings.len() => "each bolt".to_owned(),
-                    _ => format!("bolt {} and {} like it", first + 1, count - 1),
-                },
+                label: label(&group, rings.len()),
                 points: hole
                     .into_iter()
                     .chain(table.iter().map(|ring| (ring.radius[1], ring.cumulative)))
@@ -113,23 +112,25 @@ fn curves(rings: &[Vec<RingRow>]) -> Vec<Curve> {
         .collect()
 }
 
-/// Whether two bolts are drawn as one curve: mirror images differ in their last digits.
-fn like(one: &[RingRow], other: &[RingRow]) -> bool {
-    let near = |one: f64, other: f64| (one - other).abs() <= 1e-6 * one.abs().max(other.abs());
-    one.len() == other.len()
-        && one.iter().zip(other).all(|(one, other)| {
-            near(one.radius[1], other.radius[1]) && near(one.cumulative, other.cumulative)
-        })
+/// Whether two curves lie on each other: the same radii in contact, and the same growth.
+fn alike(one: &[RingRow], other: &[RingRow]) -> bool {
+    let total = one.last().map_or(0.0, |ring| ring.cumulative);
+    one.iter().zip(other).all(|(one, other)| {
+        one.pressure <= 0.0
+            || (one.radius[1] - other.radius[1]).abs() <= ONE_LINE * one.radius[1]
+                && (one.cumulative - other.cumulative).abs() <= ONE_LINE * total
+    })
 }
 
-/// The rings up to where nothing more is gathered, and a little of the level part.
-fn gathered(table: &[RingRow]) -> &[RingRow] {
-    let total = table.last().map_or(0.0, |ring| ring.cumulative);
-    let Some(full) = table.iter().find(|ring| ring.cumulative >= 0.999 * total) else {
-        return table;
-    };
-    let end = table.partition_point(|ring| ring.radius[1] <= 1.5 * full.radius[1]);
-    &table[..end]
+fn label(group: &[usize], bolts: usize) -> String {
+    match group {
+        [only] => format!("bolt {}", only + 1),
+        _ if group.len() == bolts => "each bolt".to_owned(),
+        _ => {
+            let numbers: Vec<String> = group.iter().map(|index| (index + 1).to_string()).collect();
+            format!("bolts {}", numbers.join(" "))
+        }
+    }
 }
 
 /// Radii of the fastener, where all bolts are of one kind.

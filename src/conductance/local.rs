@@ -115,6 +115,11 @@ impl Local {
         }
     }
 
+    /// The interface this was prepared from.
+    pub fn interface(&self) -> &Interface {
+        &self.interface
+    }
+
     /// Local conductance where the faces touch without pressure, W/(m² K).
     #[inline]
     pub fn unloaded(&self) -> f64 {

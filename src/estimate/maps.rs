@@ -9,6 +9,8 @@ use crate::{
 pub fn field_map(joint: &Joint, columns: usize) -> Result<FieldMap, Failure> {
     let chain = Chain::new(joint)?;
     let state = chain.state(0, &Realisation::default())?;
+    let peak = chain.pressure(&state).peak;
+    let faces = state.conditions.faces.over_many_points(peak);
     let window = window(joint);
     let [left, lower, right, upper] = window;
     let step = (right - left) / columns as f64;
@@ -26,7 +28,7 @@ pub fn field_map(joint: &Joint, columns: usize) -> Result<FieldMap, Failure> {
             let pressure = chain.cells().pressure_at([x, y], &state.conditions.forces);
             map.pressure.push(pressure.unwrap_or(f64::NAN));
             map.conductance.push(pressure.map_or(f64::NAN, |pressure| {
-                state.conditions.faces.conductance(pressure)
+                faces(pressure)
             }));
         }
     }

@@ -30,6 +30,7 @@ impl Band {
     }
 
     /// Conductance from resistance and back: the ends change places.
+    #[must_use]
     pub fn inverse(&self) -> Self {
         Self {
             low: self.high.map(f64::recip),
@@ -242,8 +243,8 @@ pub struct TorqueSweep {
     pub stated: f64,
     /// Largest torque that passes every limit, N m, and the limit that ends it.
     pub largest: Option<(f64, &'static str)>,
-    /// Torque of the lowest source-to-sink resistance within the sweep, N m.
-    pub best: f64,
+    /// Torque of the lowest source-to-sink resistance among those that strength allows, N m.
+    pub best: Option<f64>,
     /// Points, torque rising.
     pub points: Vec<TorquePoint>,
     /// Requirement in K/W of source to sink, where one can be put so.

@@ -113,7 +113,7 @@ fn sweep(stated: f64, largest: f64, required: f64, size: f64) -> TorqueSweep {
         group: "M4 socket, 6 places".into(),
         stated,
         largest: Some((largest, "pressure under the head")),
-        best: 3.0,
+        best: Some(3.0),
         points: (1..=20)
             .map(|k| {
                 let torque = f64::from(k) / 5.0;
@@ -248,7 +248,7 @@ proptest! {
         };
         let mut torque = sweep(2.2, 2.9, 0.8, 1.0);
         torque.stated = n(45);
-        torque.best = n(46);
+        torque.best = Some(n(46));
         torque.largest = Some((n(47), "yield"));
         torque.required = Some((n(48), Limit::Least));
         torque.points[3].torque = n(49);

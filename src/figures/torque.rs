@@ -40,7 +40,10 @@ pub(super) fn draw(sweep: &TorqueSweep) -> Result<Sheet, FigureError> {
     let upper_points = band(sweep, |point| point.source_to_sink)?;
     let lower_points = band(sweep, |point| point.contact)?;
     let stated = drawable(sweep.stated, "the stated torque")?;
-    let best = drawable(sweep.best, "the best torque")?;
+    let best = match sweep.best {
+        Some(torque) => Some(drawable(torque, "the best torque")?),
+        None => None,
+    };
     let torques = || upper_points.iter().map(|p| p.torque).chain([stated]);
     let x_axis = Axis::over(
         torques().fold(f64::INFINITY, f64::min),
@@ -144,7 +147,9 @@ pub(super) fn draw(sweep: &TorqueSweep) -> Result<Sheet, FigureError> {
             sheet.disc(*only, 3.0, nominal().colour);
         }
     }
-    if let Some(value) = between(&upper_points, best) {
+    if let Some(best) = best
+        && let Some(value) = between(&upper_points, best)
+    {
         let place = [
             across(best),
             upper.bottom - upper_axis.place(value) * upper.height(),
@@ -331,10 +336,15 @@ fn key(sweep: &TorqueSweep, barred: bool) -> Vec<(Sample, String)> {
     } else {
         (Sample::Line(nominal()), "nominal".to_owned())
     }];
-    items.push((
-        Sample::HollowDot(nominal().colour),
-        format!("lowest resistance, at {} N\u{a0}m", axis::plain(sweep.best)),
-    ));
+    if let Some(best) = sweep.best {
+        items.push((
+            Sample::HollowDot(nominal().colour),
+            format!(
+                "lowest that strength allows, at {} N\u{a0}m",
+                axis::plain(best)
+            ),
+        ));
+    }
     if barred {
         items.push((Sample::Hatch, "beyond the largest torque".into()));
     }

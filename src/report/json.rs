@@ -7,7 +7,7 @@ use crate::{
         TorqueSweep,
     },
     joint::{Limit, Plane, RequirementKind},
-    report::{number::inverse, sweep::best},
+    report::number::inverse,
 };
 use serde_json::{Map, Value, json};
 
@@ -253,7 +253,6 @@ pub fn torque(sweep: &TorqueSweep) -> Value {
         "stated": sweep.stated,
         "largest": sweep.largest.map(|(torque, limit)| json!({ "torque": torque, "limit": limit })),
         "best": sweep.best,
-        "best_within_strength": best(sweep).map(|index| sweep.points[index].torque),
         "required": sweep.required.map(|(resistance, bound)| {
             json!({ "resistance": resistance, "bound": bound_key(bound) })
         }),

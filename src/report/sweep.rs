@@ -14,7 +14,9 @@ use std::fmt::Write;
 /// The sweep as a table with the stated, the best and the largest torque marked.
 pub fn torque(sweep: &TorqueSweep) -> String {
     let stated = nearest(sweep, sweep.stated);
-    let best = best(sweep);
+    let best = sweep
+        .best
+        .and_then(|best| sweep.points.iter().position(|point| point.torque >= best));
     let rows: Vec<Vec<String>> = sweep
         .points
         .iter()
@@ -85,14 +87,6 @@ pub fn torque(sweep: &TorqueSweep) -> String {
         text.push_str(&told);
     }
     text
-}
-
-/// The torque of the lowest resistance among those that strength allows.
-pub fn best(sweep: &TorqueSweep) -> Option<usize> {
-    let resistance = |index: &usize| sweep.points[*index].source_to_sink.nominal;
-    (0..sweep.points.len())
-        .filter(|index| sweep.points[*index].passes)
-        .min_by(|one, other| resistance(one).total_cmp(&resistance(other)))
 }
 
 /// What the sweep says about the best torque; never one beyond strength.

@@ -59,11 +59,12 @@ pub fn torque_sweep(joint: &Joint, options: &SweepOptions) -> Result<TorqueSweep
         .collect::<Result<Vec<TorquePoint>, Failure>>()?;
     let best = points
         .iter()
+        .filter(|point| point.passes)
         .min_by(|one, other| {
             let key = |point: &TorquePoint| point.source_to_sink.nominal;
             key(one).total_cmp(&key(other))
         })
-        .map_or(stated, |point| point.torque);
+        .map(|point| point.torque);
     Ok(TorqueSweep {
         title: joint.title.clone(),
         group: estimate::group_label(group),
