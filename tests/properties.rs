@@ -2,8 +2,9 @@
 
 use proptest::prelude::*;
 use ringsum::{
-    estimate::{Chain, Realisation, State},
+    estimate::{Chain, Options, Realisation, State},
     joint::{self, Engagement, Joint, Outline, Source, Tightening, Zone},
+    uncertainty::{SweepOptions, torque_sweep},
 };
 
 const BOX: &str = include_str!("../joints/converter_box.toml");
@@ -98,6 +99,24 @@ proptest! {
         prop_assert!((one.contact / other.contact - 1.0).abs() < 1e-12);
         prop_assert!((one.source_to_sink / other.source_to_sink - 1.0).abs() < 1e-6);
     }
+}
+
+/// In vacuum more torque always conducts better, so the best torque is the last that passes.
+#[test]
+fn best_torque_is_the_last_that_strength_allows() {
+    let options = SweepOptions {
+        group: 0,
+        from: None,
+        to: None,
+        steps: 9,
+        chain: Options { draws: 0, seed: 1 },
+    };
+    let sweep = torque_sweep(&converter_box(), &options).expect("a sweep");
+    let passing = sweep.points.iter().filter(|point| point.passes);
+    let last = passing.map(|point| point.torque).fold(0.0, f64::max);
+    assert_eq!(sweep.best, Some(last));
+    assert!(last < sweep.largest.expect("a largest torque").0);
+    assert!(sweep.points.iter().any(|point| !point.passes));
 }
 
 /// The same joint told in millimetres, newtons, seconds and kelvin (heat then in mW) gives the

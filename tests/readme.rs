@@ -46,7 +46,10 @@ fn every_block_runs_and_prints_what_it_shows() {
             ["cargo", "run", "--release", "--", rest @ ..] => rest,
             // This is what runs now.
             ["cargo", "test", "--profile", "quick"] => continue,
-            _ => panic!("the README shows `{}`, which nothing here runs", shown.command),
+            _ => panic!(
+                "the README shows `{}`, which nothing here runs",
+                shown.command
+            ),
         };
         let output = Command::new(snapbox::cmd::cargo_bin!("ringsum"))
             .args(arguments)

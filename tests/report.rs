@@ -494,17 +494,15 @@ fn a_torque_sweep_marks_the_stated_the_best_and_what_strength_forbids() {
 }
 
 #[test]
-fn a_torque_beyond_strength_is_never_called_best() {
-    let mut rising = torque_sweep();
-    rising.points[2].source_to_sink.nominal = 0.01;
-    rising.best = Some(2.2);
-    let report = sweep::torque(&rising);
-    assert!(report.contains("best     1.000 N·m"), "{report}");
-    assert_eq!(json::torque(&rising)["best_within_strength"], json!(1.0));
-    for point in &mut rising.points {
-        point.passes = false;
-    }
-    assert!(sweep::torque(&rising).contains("no torque of this range passes"));
+fn without_a_torque_that_passes_none_is_called_best() {
+    let mut barred = torque_sweep();
+    barred.best = None;
+    let report = sweep::torque(&barred);
+    assert!(
+        report.contains("no torque of this range passes"),
+        "{report}"
+    );
+    assert_eq!(json::torque(&barred)["best"], Value::Null);
 }
 
 #[test]
