@@ -1,0 +1,194 @@
+//! Elimination of a long chain of unknowns, link by link, down to a small border.
+
+use nalgebra::DMatrix;
+
+use crate::numerics::banded::NotPositiveDefinite;
+
+/// Columns eliminated before the rest of the front is updated in one matrix product.
+const PANEL: usize = 16;
+
+/// Sizes of a chain: `links + 1` lines of unknowns, neighbours joined through an interior.
+///
+/// ```text
+/// line 0 — interior 0 — line 1 — interior 1 — … — line n,   each may load any row of the border
+/// ```
+///
+/// Unknowns of one link meet only each other and the border, so that the matrix is banded; the band
+/// is kept as one dense front that moves along the chain.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub struct Chain {
+    /// Number of links.
+    pub links: usize,
+    /// Unknowns inside one link.
+    pub interior: usize,
+    /// Unknowns on one line between links.
+    pub line: usize,
+    /// Rows of the border: right-hand sides.
+    pub border: usize,
+}
+
+/// The dense part of the matrix that one link fills.
+#[derive(Clone, Debug)]
+pub struct Front {
+    chain: Chain,
+    matrix: DMatrix<f64>,
+    opened: usize,
+}
+
+impl Front {
+    /// Place of an unknown inside the link.
+    pub fn interior(&self, unknown: usize) -> usize {
+        unknown
+    }
+
+    /// Place of an unknown on the line that the chain has reached.
+    pub fn near(&self, unknown: usize) -> usize {
+        self.chain.interior + unknown
+    }
+
+    /// Place of an unknown on the line that comes next.
+    pub fn far(&self, unknown: usize) -> usize {
+        self.chain.interior + self.chain.line + unknown
+    }
+
+    /// Place of a row of the border.
+    pub fn border(&self, row: usize) -> usize {
+        self.chain.interior + 2 * self.chain.line + row
+    }
+
+    /// Adds to the entry of two places, and to its mirror image; give each pair once.
+    pub fn add(&mut self, i: usize, j: usize, value: f64) {
+        let (row, column) = (i.max(j), i.min(j));
+        self.matrix[(row, column)] += value;
+        let first = self.border(0);
+        if row >= first {
+            self.opened = self.opened.max(row - first + 1);
+        }
+    }
+
+    /// Gives an unknown the value zero: its own equation becomes x = 0.
+    ///
+    /// Nothing else may have been added, or be added, to that place.
+    pub fn fix(&mut self, place: usize) {
+        self.matrix[(place, place)] = 1.0;
+    }
+
+    /// Eliminates the unknowns before `count`; rows beyond the opened border are left alone.
+    fn eliminate(&mut self, count: usize) -> Result<(), NotPositiveDefinite> {
+        let size = self.border(self.opened);
+        for start in (0..count).step_by(PANEL) {
+            let end = (start + PANEL).min(count);
+            for pivot in start..end {
+                self.scale_column(pivot, size)?;
+                self.update_panel(pivot, end, size);
+            }
+            let (panel, mut rest) = self.matrix.columns_range_pair_mut(start..end, end..size);
+            let lower = panel.rows(end, size - end);
+            let upper = lower.transpose();
+            rest.rows_mut(end, size - end)
+                .gemm(-1.0, &lower, &upper, 1.0);
+        }
+        Ok(())
+    }
+
+    fn scale_column(&mut self, pivot: usize, size: usize) -> Result<(), NotPositiveDefinite> {
+        let value = self.matrix[(pivot, pivot)];
+        if !(value > 0.0 && value.is_finite()) {
+            return Err(NotPositiveDefinite { row: pivot });
+        }
+        let scale = value.sqrt().recip();
+        let stride = self.matrix.nrows();
+        let column = &mut self.matrix.as_mut_slice()[pivot * stride..][pivot..size];
+        for entry in column {
+            *entry *= scale;
+        }
+        Ok(())
+    }
+
+    /// Takes the pivot's column out of the columns of its panel that follow.
+    fn update_panel(&mut self, pivot: usize, end: usize, size: usize) {
+        let stride = self.matrix.nrows();
+        let (done, rest) = self
+            .matrix
+            .as_mut_slice()
+            .split_at_mut((pivot + 1) * stride);
+        let done = &done[pivot * stride..];
+        for column in pivot + 1..end {
+            let factor = done[column];
+            let target = &mut rest[(column - pivot - 1) * stride..][column..size];
+            for (entry, above) in target.iter_mut().zip(&done[column..size]) {
+                *entry -= factor * above;
+            }
+        }
+    }
+
+    /// Moves on by one link: the far line becomes the near one.
+    fn advance(&mut self, next: &mut Front) {
+        next.matrix.fill(0.0);
+        next.opened = self.opened;
+        let (from, to, line) = (self.far(0), self.near(0), self.chain.line);
+        let kept = self.opened;
+        let border = self.border(0);
+        for column in 0..line {
+            let (old, new) = (from + column, to + column);
+            let source = self.matrix.column(old);
+            let mut target = next.matrix.column_mut(new);
+            target
+                .rows_mut(new, line - column)
+                .copy_from(&source.rows(old, line - column));
+            target
+                .rows_mut(border, kept)
+                .copy_from(&source.rows(border, kept));
+        }
+        next.matrix
+            .view_mut((border, border), (kept, kept))
+            .copy_from(&self.matrix.view((border, border), (kept, kept)));
+    }
+}
+
+impl Chain {
+    /// The response Bᵀ K⁻¹ B of the border, K the matrix of the chain, B its loads.
+    ///
+    /// `fill` adds the matrix and the loads of one link to an empty front. The bordered matrix
+    ///
+    /// ```text
+    /// | K   B |   loses K by Cholesky elimination and keeps −Bᵀ K⁻¹ B in the corner,
+    /// | Bᵀ  0 |   so that no displacement is ever formed and no back substitution done.
+    /// ```
+    ///
+    /// Border rows cost nothing before the first link that loads them: number them in that order.
+    /// Error: the pivot's place in its front.
+    pub fn response(
+        self,
+        mut fill: impl FnMut(usize, &mut Front),
+    ) -> Result<DMatrix<f64>, NotPositiveDefinite> {
+        let size = self.interior + 2 * self.line + self.border;
+        let mut front = Front {
+            chain: self,
+            matrix: DMatrix::zeros(size, size),
+            opened: 0,
+        };
+        let mut next = front.clone();
+        for link in 0..self.links {
+            fill(link, &mut front);
+            front.eliminate(front.far(0))?;
+            front.advance(&mut next);
+            std::mem::swap(&mut front, &mut next);
+        }
+        // The last line stands in the near place; the other places are empty.
+        for unknown in 0..self.interior {
+            front.fix(unknown);
+        }
+        for unknown in 0..self.line {
+            front.fix(front.far(unknown));
+        }
+        front.eliminate(front.border(0))?;
+        let first = front.border(0);
+        let mut response = -front
+            .matrix
+            .view((first, first), (self.border, self.border))
+            .into_owned();
+        response.fill_upper_triangle_with_lower_triangle();
+        Ok(response)
+    }
+}
