@@ -192,3 +192,93 @@ impl Chain {
         Ok(response)
     }
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    const CHAIN: Chain = Chain {
+        links: 4,
+        interior: 3,
+        line: 17,
+        border: 3,
+    };
+
+    /// Entry of a diagonally dominant pattern between two unknowns of one link.
+    fn entry(i: usize, j: usize) -> f64 {
+        let coupling = ((i * 7 + j * 13) % 11) as f64 / 11.0 - 0.5;
+        if i == j { 40.0 } else { coupling }
+    }
+
+    /// Global number of a place of a link, lines and interiors in turn.
+    fn number(link: usize, place: usize) -> usize {
+        let first = link * (CHAIN.line + CHAIN.interior);
+        if place < CHAIN.interior {
+            first + CHAIN.line + place
+        } else if place < CHAIN.interior + CHAIN.line {
+            first + place - CHAIN.interior
+        } else {
+            first + place
+        }
+    }
+
+    // 1e-13: a dense factorisation of the same, well conditioned matrix; only roundings differ.
+    #[test]
+    fn response_is_that_of_the_whole_matrix() {
+        let size = CHAIN.interior + 2 * CHAIN.line;
+        let order = CHAIN.links * (CHAIN.line + CHAIN.interior) + CHAIN.line;
+        let mut matrix = DMatrix::<f64>::zeros(order, order);
+        let mut loads = DMatrix::<f64>::zeros(order, CHAIN.border);
+        let found = CHAIN
+            .response(|link, front| {
+                for i in 0..size {
+                    for j in 0..=i {
+                        front.add(i, j, entry(i, j));
+                        let (row, column) = (number(link, i), number(link, j));
+                        matrix[(row, column)] += entry(i, j);
+                        if i != j {
+                            matrix[(column, row)] += entry(i, j);
+                        }
+                    }
+                }
+                // The third load acts on the last link alone, the second from the second on.
+                for row in 0..CHAIN.border {
+                    if link >= row + usize::from(row == 2) {
+                        let places = [
+                            front.near(row),
+                            front.interior(1),
+                            front.far(2),
+                            front.far(16),
+                        ];
+                        for (step, place) in places.into_iter().enumerate() {
+                            let value = 1.0 + step as f64 * 0.3 - row as f64;
+                            front.add(front.border(row), place, value);
+                            loads[(number(link, place), row)] += value;
+                        }
+                    }
+                }
+            })
+            .unwrap();
+        let solved = matrix.cholesky().unwrap().solve(&loads);
+        let wanted: DMatrix<f64> = loads.tr_mul(&solved);
+        let off: DMatrix<f64> = found - wanted;
+        assert!(off.amax() < 1e-13);
+    }
+
+    #[test]
+    fn a_loose_chain_is_refused() {
+        let chain = Chain {
+            links: 2,
+            interior: 0,
+            line: 1,
+            border: 1,
+        };
+        let spring = |_: usize, front: &mut Front| {
+            front.add(0, 0, 1.0);
+            front.add(1, 1, 1.0);
+            front.add(1, 0, -1.0);
+            front.add(front.border(0), 0, 1.0);
+        };
+        assert!(chain.response(spring).is_err());
+    }
+}

@@ -18,8 +18,8 @@ pub fn graded(marks: [Mark; 2], growth: f64, widest: f64) -> Vec<f64> {
     let mut spacing = marks.map(|mark| mark.spacing.min(widest));
     let mut steps: [Vec<f64>; 2] = [Vec::new(), Vec::new()];
     let mut covered = 0.0;
-    // A step that would overshoot by more than half is not laid.
-    while covered + 0.5 * spacing[0].min(spacing[1]) < length {
+    // At least one step; another one only where it overshoots by less than half.
+    while covered == 0.0 || covered + 0.5 * spacing[0].min(spacing[1]) < length {
         let end = usize::from(spacing[1] < spacing[0]);
         steps[end].push(spacing[end]);
         covered += spacing[end];
@@ -37,4 +37,42 @@ pub fn graded(marks: [Mark; 2], growth: f64, widest: f64) -> Vec<f64> {
         *last = marks[1].at;
     }
     lines
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    fn marks(spacings: [f64; 2]) -> [Mark; 2] {
+        [(1.0, spacings[0]), (3.0, spacings[1])].map(|(at, spacing)| Mark { at, spacing })
+    }
+
+    #[test]
+    fn lines_rise_from_mark_to_mark_and_grow_no_faster_than_asked() {
+        for spacings in [[0.01, 0.3], [0.2, 0.02], [0.05, 0.05], [5.0, 7.0]] {
+            let lines = graded(marks(spacings), 1.5, 0.4);
+            assert!(lines[0].to_bits() == 1.0_f64.to_bits());
+            assert!(lines[lines.len() - 1].to_bits() == 3.0_f64.to_bits());
+            let steps: Vec<f64> = lines.windows(2).map(|pair| pair[1] - pair[0]).collect();
+            for pair in steps.windows(2) {
+                let ratio = (pair[1] / pair[0]).max(pair[0] / pair[1]);
+                // Steps from both ends meet within one growth of each other.
+                assert!(ratio < 1.5 * 1.5 + 1e-9, "{ratio}");
+            }
+            for (step, spacing) in [
+                (steps[0], spacings[0]),
+                (steps[steps.len() - 1], spacings[1]),
+            ] {
+                let wanted = spacing.min(0.4);
+                // Fitting stretches or shrinks by less than half a step in the whole length.
+                assert!((step / wanted - 1.0).abs() < 0.3, "{step} {wanted}");
+            }
+        }
+    }
+
+    #[test]
+    fn a_short_gap_is_one_step() {
+        let lines = graded([1.0, 1.001].map(|at| Mark { at, spacing: 0.1 }), 1.5, 0.4);
+        assert_eq!(lines, [1.0, 1.001]);
+    }
 }

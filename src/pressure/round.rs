@@ -11,12 +11,15 @@ mod contact;
 mod edge;
 mod mesh;
 mod plate;
+mod search;
 mod solution;
 
 pub use solution::{Health, Solution};
 
 use contact::{Contact, contact};
+use edge::contact_edge;
 use mesh::Mesh;
+use search::Search;
 
 /// Two coaxial annular plates clamped between two heads.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -55,7 +58,7 @@ pub enum Head {
 pub enum Faces {
     /// They slide freely.
     Frictionless,
-    /// They do not slide at all.
+    /// They do not slide, but for the last hundredths of the thickness before the contact edge.
     Stuck,
 }
 
@@ -71,8 +74,12 @@ pub struct NotConverged {
     pub residual: f64,
 }
 
+/// Smallest tolerance: below it the grids outgrow their use.
+const FINEST_TOLERANCE: f64 = 1e-4;
+/// Width behind the edge over which p² is fitted, in thicknesses or bearing radii, whichever is less.
+const EDGE_REACH: f64 = 0.25;
 /// Grids after which the edge counts as not found.
-const MOST_GRIDS: usize = 9;
+const MOST_GRIDS: usize = 16;
 /// Tolerance for which the spacings of the grid were found, in bearing radii.
 const USUAL_TOLERANCE: f64 = 0.003;
 /// Spacing of the first grid over that of the last.
@@ -99,26 +106,35 @@ const STILL: f64 = 0.25;
 /// Checked: `public_cases_are_met`, `layer_radii_are_met`, `equal_rims_carry_the_mean_pressure`.
 pub fn solve(problem: &Problem) -> Result<Solution, NotConverged> {
     let unit = problem.scaled();
+    unit.check()?;
     let finest = (problem.tolerance / USUAL_TOLERANCE).powf(0.6);
-    let reach = 0.25 * unit.thickness[0].min(unit.thickness[1]).min(1.0);
-    let mut edge = unit.guess();
-    let mut iterations = 0;
+    let reach = EDGE_REACH * unit.thickness[0].min(unit.thickness[1]).min(1.0);
+    let still = STILL * problem.tolerance;
+    let mut search = Search::from(unit.guess());
+    let mut effort = Effort::default();
     let mut moved = f64::NAN;
     for grid in 0..MOST_GRIDS {
         let coarseness = if grid == 0 { FIRST_COARSENESS } else { 1.0 };
-        let mesh = Mesh::new(&unit, edge, finest * coarseness);
+        let mesh = Mesh::new(&unit, search.edge, finest * coarseness);
         let contact = contact(&unit, &mesh)?;
-        iterations += contact.iterations;
-        let found = edge::contact_edge(&mesh.radii, &contact.pressure, reach);
-        moved = (found - edge) / problem.tolerance;
-        if grid > 0 && moved.abs() < STILL {
-            let effort = Effort {
-                iterations,
-                remeshes: grid,
-            };
-            return Ok(problem.solution(&mesh, &contact, (found, effort)));
+        effort.iterations += contact.iterations;
+        effort.remeshes = grid;
+        let found = contact_edge(&mesh.radii, &contact.pressure, reach);
+        if grid == 0 {
+            search = Search::from(found);
+            continue;
         }
-        edge = found;
+        moved = search.narrow(found);
+        // One move of a sluggish edge tells nothing yet.
+        if moved <= still && (grid > 1 || unit.faces == Faces::Frictionless) {
+            return Ok(problem.solution(&Outcome {
+                mesh,
+                contact,
+                edge: search.edge.min(unit.rim_radius),
+                effort,
+            }));
+        }
+        search.edge = search.edge.min(unit.rim_radius);
     }
     Err(NotConverged {
         solver: "search for the contact edge",
@@ -127,7 +143,16 @@ pub fn solve(problem: &Problem) -> Result<Solution, NotConverged> {
     })
 }
 
+/// What stands after the last grid, for bearing radius 1 and mean head pressure 1.
+struct Outcome {
+    mesh: Mesh,
+    contact: Contact,
+    edge: f64,
+    effort: Effort,
+}
+
 /// Work done over all grids.
+#[derive(Default)]
 struct Effort {
     iterations: usize,
     remeshes: usize,
@@ -160,12 +185,45 @@ impl Problem {
         cone(&pair, ConeRule::Fitted, ConeShape::Fitted).contact_radius
     }
 
+    /// Refuses what no grid can be laid over, for bearing radius 1.
+    fn check(&self) -> Result<(), NotConverged> {
+        let positive = |values: [f64; 2]| values.iter().all(|x| *x > 0.0 && x.is_finite());
+        let sound = 0.0 <= self.hole_radius
+            && self.hole_radius < 1.0
+            && 1.0 <= self.rim_radius
+            && self.rim_radius.is_finite()
+            && positive(self.thickness)
+            && positive(self.youngs_modulus)
+            && self
+                .poisson
+                .iter()
+                .all(|ratio| -1.0 < *ratio && *ratio < 0.5)
+            && FINEST_TOLERANCE <= self.tolerance
+            && self.tolerance.is_finite();
+        if sound {
+            Ok(())
+        } else {
+            Err(NotConverged {
+                solver: "grid of the plates",
+                iterations: 0,
+                residual: f64::NAN,
+            })
+        }
+    }
+
     /// The solution in the problem's own units.
-    fn solution(&self, mesh: &Mesh, contact: &Contact, (edge, effort): (f64, Effort)) -> Solution {
+    fn solution(&self, outcome: &Outcome) -> Solution {
+        let Outcome {
+            mesh,
+            contact,
+            edge,
+            effort,
+        } = outcome;
         let length = self.bearing_radius;
         let area = PI * (length.powi(2) - self.hole_radius.powi(2));
         let per_force = area.recip();
         let gap_per_force = per_force * length / self.youngs_modulus[0];
+        let scaled = |values: &[f64], unit: f64| values.iter().map(|x| x * unit).collect();
         let smallest = |values: &[f64], touching: bool| {
             let chosen = values.iter().zip(&contact.touches);
             chosen
@@ -174,9 +232,9 @@ impl Problem {
         };
         Solution {
             contact_radius: edge * length,
-            radii: mesh.radii.iter().map(|radius| radius * length).collect(),
-            pressure_per_force: contact.pressure.iter().map(|p| p * per_force).collect(),
-            gap_per_force: contact.gap.iter().map(|gap| gap * gap_per_force).collect(),
+            radii: scaled(&mesh.radii, length),
+            pressure_per_force: scaled(&contact.pressure, per_force),
+            gap_per_force: scaled(&contact.gap, gap_per_force),
             health: Health {
                 force_balance: contact.force_balance,
                 smallest_pressure_inside: per_force * smallest(&contact.pressure, true),

@@ -67,7 +67,7 @@ pub(super) fn contact(problem: &Problem, mesh: &Mesh) -> Result<Contact, NotConv
         bearing: mesh.bearing,
         sheared: match problem.faces {
             Faces::Frictionless => 0,
-            Faces::Stuck => shear_reach(mesh),
+            Faces::Stuck => sheared_lines(problem, mesh),
         },
     };
     let numbering = Numbering {
@@ -120,7 +120,6 @@ pub(super) fn contact(problem: &Problem, mesh: &Mesh) -> Result<Contact, NotConv
     for (line, active) in active[..lines].iter_mut().enumerate() {
         *active = line < mesh.edge || line + 1 == lines && line == mesh.edge;
     }
-    programme.follow(&mut active);
     let optimum = programme.solve(active).map_err(|fault| NotConverged {
         solver: "active set of the contact",
         iterations: fault.iterations,
@@ -146,12 +145,20 @@ fn compliances(
     Ok([first, second])
 }
 
-/// Lines that can carry shear: those within the expected contact and a little beyond.
+/// Share of the thinner plate, or of the bearing radius, along which stuck faces slip at the edge.
 ///
-/// The edge moves less than this in the last round of re-meshing, the only one that counts.
-fn shear_reach(mesh: &Mesh) -> usize {
-    const BEYOND: usize = 6;
-    (mesh.edge + BEYOND).min(mesh.radii.len())
+/// Unlike stuck plates have no smooth edge at all: pressure and shear would swing without end towards
+/// it. Over this length shear is let go, as it would be by any real friction.
+const EDGE_SLIP: f64 = 0.02;
+
+/// Number of lines, from the hole on, that can carry shear.
+fn sheared_lines(problem: &Problem, mesh: &Mesh) -> usize {
+    let end = mesh.radii[mesh.edge];
+    if mesh.edge + 1 == mesh.radii.len() {
+        return mesh.radii.len();
+    }
+    let slip = EDGE_SLIP * problem.thickness[0].min(problem.thickness[1]).min(1.0);
+    mesh.radii.partition_point(|line| *line < end - slip)
 }
 
 fn bounds(numbering: &Numbering) -> Vec<Bound> {

@@ -62,3 +62,34 @@ fn root(polynomial: &DVector<f64>) -> Option<f64> {
     }
     None
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    // 1e-9: p² is a cubic here, which the fit reproduces.
+    #[test]
+    fn square_root_law_gives_its_edge() {
+        let (edge, step) = (1.437, 0.021);
+        let radii: Vec<f64> = (0..40).map(|line| 0.9 + f64::from(line) * step).collect();
+        let pressure: Vec<f64> = radii
+            .iter()
+            .map(|r| (edge - r).max(0.0).sqrt() * (1.0 + 0.4 * (edge - r)))
+            .collect();
+        let found = contact_edge(&radii, &pressure, 0.3);
+        assert!((found - edge).abs() < 1e-9, "{found}");
+    }
+
+    #[test]
+    fn pressure_up_to_the_rim_puts_the_edge_there() {
+        let found = contact_edge(&[1.0, 1.5, 2.0], &[1.0, 0.9, 0.8], 0.3);
+        assert!((found - 2.0).abs() < f64::EPSILON);
+    }
+
+    #[test]
+    fn too_few_lines_fall_back_on_the_grid() {
+        let found = contact_edge(&[1.0, 1.5, 2.0, 2.5], &[1.0, 0.9, 0.0, 0.0], 0.3);
+        assert!((found - 2.0).abs() < f64::EPSILON);
+        assert!(contact_edge(&[1.0, 1.5], &[0.0, 0.0], 0.3).is_nan());
+    }
+}

@@ -26,12 +26,13 @@ const GROWTH_THROUGH: f64 = 1.6;
 const AT_HOLE: f64 = 0.03;
 const AT_HEAD: f64 = 0.015;
 /// A rigid head's pressure is singular at its edge, the pressure of stuck faces at the hole.
-const AT_STUCK_HOLE: f64 = 0.001;
-const AT_RIGID_HEAD: f64 = 0.0015;
-const UNDER_RIGID_HEAD: f64 = 0.003;
+const AT_STUCK_EDGE: f64 = 0.0015;
+const AT_STUCK_HOLE: f64 = 0.003;
+const AT_RIGID_HEAD: f64 = 0.005;
+const UNDER_RIGID_HEAD: f64 = 0.01;
 const AT_EDGE: f64 = 0.003;
 const IN_CONTACT: f64 = 0.06;
-const AT_INTERFACE: f64 = 0.03;
+const AT_INTERFACE: f64 = 0.01;
 const AT_OUTSIDE: f64 = 0.08;
 /// Widest spacing beyond the contact, in units of the radius of the rim.
 const BEYOND: f64 = 0.15;
@@ -46,13 +47,14 @@ impl Mesh {
         // Where all lengths shrink with the plates or the head's width, so do the spacings.
         let thinnest = problem.thickness[0].min(problem.thickness[1]);
         let size = coarseness * thinnest.min(1.0).sqrt();
+        let beyond = BEYOND * rim;
         let mark = |at: f64, spacing: f64| Mark {
             at,
             spacing: spacing * size,
         };
-        let at_hole = match problem.faces {
-            Faces::Frictionless => AT_HOLE,
-            Faces::Stuck => AT_STUCK_HOLE,
+        let (at_hole, at_edge) = match problem.faces {
+            Faces::Frictionless => (AT_HOLE, AT_EDGE),
+            Faces::Stuck => (AT_STUCK_HOLE, AT_STUCK_EDGE),
         };
         let (at_head, outside) = match problem.head {
             Head::Uniform => (AT_HEAD, AT_OUTSIDE),
@@ -61,19 +63,19 @@ impl Mesh {
         let mut marks = vec![mark(a, at_hole), mark(1.0, at_head)];
         let inside = edge < rim;
         if inside {
-            marks.push(mark(edge, AT_EDGE));
+            marks.push(mark(edge, at_edge));
         }
         if rim > 1.0 {
-            marks.push(mark(rim, BEYOND * rim / size * coarseness));
+            marks.push(mark(rim, beyond / size * coarseness));
         }
         marks.sort_by(|one, other| one.at.total_cmp(&other.at));
         let mut radii = vec![a];
         for pair in marks.windows(2) {
             let contact = pair[1].at <= edge.max(1.0);
             let widest = if contact {
-                IN_CONTACT * size
+                IN_CONTACT * size * pair[1].at.max(1.0)
             } else {
-                BEYOND * rim * coarseness
+                beyond * coarseness
             };
             let lines = graded([pair[0], pair[1]], GROWTH, widest);
             radii.extend(&lines[1..]);
@@ -81,11 +83,19 @@ impl Mesh {
         let line_at = |radius: f64| radii.partition_point(|line| *line < radius);
         let heights = problem.thickness.map(|thickness| {
             let marks = [mark(0.0, AT_INTERFACE), mark(thickness, outside)];
-            graded(marks, GROWTH_THROUGH, THROUGH * thickness * coarseness.min(1.0))
+            graded(
+                marks,
+                GROWTH_THROUGH,
+                THROUGH * thickness * coarseness.min(1.0),
+            )
         });
         Self {
             bearing: line_at(1.0),
-            edge: if inside { line_at(edge) } else { radii.len() - 1 },
+            edge: if inside {
+                line_at(edge)
+            } else {
+                radii.len() - 1
+            },
             radii,
             heights,
         }

@@ -49,7 +49,11 @@ impl Solution {
     /// Share of the clamp force carried inside a radius, 0 to 1.
     pub fn carried_within(&self, radius: f64) -> f64 {
         let mut carried = 0.0;
-        for (radii, p) in self.radii.windows(2).zip(self.pressure_per_force.windows(2)) {
+        for (radii, p) in self
+            .radii
+            .windows(2)
+            .zip(self.pressure_per_force.windows(2))
+        {
             if radius <= radii[0] {
                 break;
             }
