@@ -1,11 +1,15 @@
 //! Elimination of a long chain of unknowns, link by link, down to a small border.
 
+use std::ops::Range;
+
 use nalgebra::DMatrix;
 
 use crate::numerics::banded::NotPositiveDefinite;
 
 /// Columns eliminated before the rest of the front is updated in one matrix product.
 const PANEL: usize = 16;
+/// Columns of the rest that one matrix product updates.
+const STRIP: usize = 48;
 
 /// Sizes of a chain: `links + 1` lines of unknowns, neighbours joined through an interior.
 ///
@@ -82,11 +86,7 @@ impl Front {
                 self.scale_column(pivot, size)?;
                 self.update_panel(pivot, end, size);
             }
-            let (panel, mut rest) = self.matrix.columns_range_pair_mut(start..end, end..size);
-            let lower = panel.rows(end, size - end);
-            let upper = lower.transpose();
-            rest.rows_mut(end, size - end)
-                .gemm(-1.0, &lower, &upper, 1.0);
+            self.update_rest(start..end, size);
         }
         Ok(())
     }
@@ -103,6 +103,22 @@ impl Front {
             *entry *= scale;
         }
         Ok(())
+    }
+
+    /// Takes the panel's columns out of the lower half of all that follow, strip by strip.
+    fn update_rest(&mut self, panel: Range<usize>, size: usize) {
+        let mut first = panel.end;
+        while first < size {
+            let last = (first + STRIP).min(size);
+            let (done, mut rest) = self
+                .matrix
+                .columns_range_pair_mut(panel.clone(), first..last);
+            let lower = done.rows(first, size - first);
+            let upper = done.rows(first, last - first).transpose();
+            rest.rows_mut(first, size - first)
+                .gemm(-1.0, &lower, &upper, 1.0);
+            first = last;
+        }
     }
 
     /// Takes the pivot's column out of the columns of its panel that follow.
@@ -122,27 +138,22 @@ impl Front {
         }
     }
 
-    /// Moves on by one link: the far line becomes the near one.
-    fn advance(&mut self, next: &mut Front) {
-        next.matrix.fill(0.0);
-        next.opened = self.opened;
-        let (from, to, line) = (self.far(0), self.near(0), self.chain.line);
-        let kept = self.opened;
-        let border = self.border(0);
+    /// Moves on by one link: the far line becomes the near one, the rest of the link is cleared.
+    ///
+    /// Only the lower half of the front is ever read.
+    fn advance(&mut self) {
+        let size = self.border(self.opened);
+        let (near, far, stride) = (self.near(0), self.far(0), self.matrix.nrows());
+        let (line, border) = (self.chain.line, self.border(0));
+        let slice = self.matrix.as_mut_slice();
         for column in 0..line {
-            let (old, new) = (from + column, to + column);
-            let source = self.matrix.column(old);
-            let mut target = next.matrix.column_mut(new);
-            target
-                .rows_mut(new, line - column)
-                .copy_from(&source.rows(old, line - column));
-            target
-                .rows_mut(border, kept)
-                .copy_from(&source.rows(border, kept));
+            let (old, new) = ((far + column) * stride, (near + column) * stride);
+            slice.copy_within(old + far + column..old + border, new + near + column);
+            slice[new + far..new + border].fill(0.0);
+            slice.copy_within(old + border..old + size, new + border);
         }
-        next.matrix
-            .view_mut((border, border), (kept, kept))
-            .copy_from(&self.matrix.view((border, border), (kept, kept)));
+        slice[..near * stride].fill(0.0);
+        slice[far * stride..border * stride].fill(0.0);
     }
 }
 
@@ -168,12 +179,10 @@ impl Chain {
             matrix: DMatrix::zeros(size, size),
             opened: 0,
         };
-        let mut next = front.clone();
         for link in 0..self.links {
             fill(link, &mut front);
             front.eliminate(front.far(0))?;
-            front.advance(&mut next);
-            std::mem::swap(&mut front, &mut next);
+            front.advance();
         }
         // The last line stands in the near place; the other places are empty.
         for unknown in 0..self.interior {

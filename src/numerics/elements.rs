@@ -132,7 +132,7 @@ impl Ring {
             let (first, shear) = (weight * lame.first, weight * lame.shear);
             for i in 0..NODES {
                 let (ri, zi, hi) = (by_r[i], by_z[i], hoop[i]);
-                for j in 0..NODES {
+                for j in 0..=i {
                     let (rj, zj, hj) = (by_r[j], by_z[j], hoop[j]);
                     stiffness[2 * i][2 * j] += first * (ri + hi) * (rj + hj)
                         + shear * (2.0 * (ri * rj + hi * hj) + zi * zj);
@@ -141,6 +141,12 @@ impl Ring {
                     stiffness[2 * i + 1][2 * j + 1] +=
                         first * zi * zj + shear * (2.0 * zi * zj + ri * rj);
                 }
+            }
+        }
+        for row in 1..2 * NODES {
+            let (above, rest) = stiffness.split_at_mut(row);
+            for (column, line) in above.iter_mut().enumerate() {
+                line[row] = rest[0][column];
             }
         }
         stiffness

@@ -23,17 +23,17 @@ const GROWTH: f64 = 1.3;
 const GROWTH_THROUGH: f64 = 1.6;
 /// Spacings at fineness 1, in units of the bearing radius, found by refining until the public
 /// reference solutions were met with room to spare.
-const AT_HOLE: f64 = 0.03;
-const AT_HEAD: f64 = 0.015;
+const AT_HOLE: f64 = 0.04;
+const AT_HEAD: f64 = 0.02;
 /// A rigid head's pressure is singular at its edge, the pressure of stuck faces at the hole.
 const AT_STUCK_EDGE: f64 = 0.0015;
 const AT_STUCK_HOLE: f64 = 0.003;
 const AT_RIGID_HEAD: f64 = 0.005;
 const UNDER_RIGID_HEAD: f64 = 0.01;
 const AT_EDGE: f64 = 0.003;
-const IN_CONTACT: f64 = 0.06;
-const AT_INTERFACE: f64 = 0.01;
-const AT_OUTSIDE: f64 = 0.08;
+const IN_CONTACT: f64 = 0.08;
+const AT_INTERFACE: f64 = 0.015;
+const AT_OUTSIDE: f64 = 0.1;
 /// Widest spacing beyond the contact, in units of the radius of the rim.
 const BEYOND: f64 = 0.15;
 /// Widest spacing through a plate, in units of its thickness.
