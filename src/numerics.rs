@@ -3,6 +3,10 @@
 pub mod banded;
 pub mod block_grid;
 pub mod block_tridiagonal;
+pub mod complementarity;
+pub mod condensation;
+pub mod elements;
+pub mod grading;
 pub mod interpolation;
 pub mod quadrature;
 pub mod roots;

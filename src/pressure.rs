@@ -2,5 +2,6 @@
 
 mod beta;
 pub mod cone;
+pub mod round;
 
 pub use cone::{Cone, Pair, Profile, cone};
