@@ -218,7 +218,7 @@ fn a_sweep_shows_stated_largest_best_and_required() {
         "torque, N\u{a0}m",
         "stated 2.2 N\u{a0}m",
         "largest 2.9 N\u{a0}m: yield of the bolt",
-        "lowest resistance, at 2.8 N\u{a0}m",
+        "lowest that strength allows, at 2.8 N\u{a0}m",
         "≤ 0.8",
     ] {
         assert!(holds(&texts, part), "{part} is missing in {texts:?}");

@@ -17,15 +17,14 @@ fn blocks(text: &str) -> Vec<Vec<Shown>> {
         }
         let mut block: Vec<Shown> = Vec::new();
         for line in lines.by_ref().take_while(|line| *line != "```") {
-            match line.strip_prefix("$ ") {
-                Some(command) => block.push(Shown {
+            if let Some(command) = line.strip_prefix("$ ") {
+                block.push(Shown {
                     command: command.to_owned(),
                     output: Vec::new(),
-                }),
-                None => {
-                    let shown = block.last_mut().expect("output follows a command");
-                    shown.output.push(line.to_owned());
-                }
+                });
+            } else {
+                let shown = block.last_mut().expect("output follows a command");
+                shown.output.push(line.to_owned());
             }
         }
         blocks.push(block);
@@ -42,8 +41,7 @@ fn every_block_runs_and_prints_what_it_shows() {
     for shown in blocks(&readme).into_iter().flatten() {
         let words: Vec<&str> = shown.command.split_whitespace().collect();
         let arguments = match words.as_slice() {
-            ["ringsum", rest @ ..] => rest,
-            ["cargo", "run", "--release", "--", rest @ ..] => rest,
+            ["ringsum", rest @ ..] | ["cargo", "run", "--release", "--", rest @ ..] => rest,
             // This is what runs now.
             ["cargo", "test", "--profile", "quick"] => continue,
             _ => panic!(

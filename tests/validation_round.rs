@@ -25,12 +25,16 @@ struct Case {
 }
 
 fn cases() -> Vec<Case> {
-    serde_json::from_str(include_str!("data/axisym_round.json")).unwrap()
+    serde_json::from_str(include_str!("data/axisym_round.json")).expect("the data are JSON")
 }
 
 fn case(id: &str) -> Problem {
     let cases = cases();
-    cases.iter().find(|case| case.id == id).unwrap().problem()
+    cases
+        .iter()
+        .find(|case| case.id == id)
+        .expect("the case is listed")
+        .problem()
 }
 
 impl Case {
@@ -83,7 +87,7 @@ fn unlike() -> Problem {
 }
 
 fn solved(problem: &Problem) -> Solution {
-    solve(problem).unwrap()
+    solve(problem).expect("the contact converges")
 }
 
 // Source: this project's own finite-element solutions of all 34 public cases, another element (nine

@@ -46,7 +46,7 @@ impl Curve {
             let cubic = [
                 low,
                 -before / 3.0 - low / 2.0 + high - after / 6.0,
-                (before - 2.0 * low + high) / 2.0,
+                0.5 * (before + high) - low,
                 (after - before) / 6.0 + (low - high) / 2.0,
             ];
             let middle = at(index as f64 + 0.5);

@@ -27,8 +27,7 @@ pub fn field_map(joint: &Joint, columns: usize) -> Result<FieldMap, Failure> {
             let x = left + (column as f64 + 0.5) * step;
             let pressure = chain.cells().pressure_at([x, y], &state.conditions.forces);
             map.pressure.push(pressure.unwrap_or(f64::NAN));
-            map.conductance
-                .push(pressure.map_or(f64::NAN, |pressure| faces(pressure)));
+            map.conductance.push(pressure.map_or(f64::NAN, &faces));
         }
     }
     Ok(map)
