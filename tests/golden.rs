@@ -1,6 +1,6 @@
 //! Every demo joint, its printed digits. Says *unchanged*, never *right*.
 //!
-//! `RINGSUM_REWRITE=1 cargo test --profile quick --test golden` writes the files anew; read the
+//! `SNAPSHOTS=overwrite cargo test --profile quick --test golden` writes the files anew; read the
 //! difference before you commit it.
 
 use std::{fs, path::Path};
@@ -30,7 +30,7 @@ fn demo_joints_print_what_they_printed() {
         let golden = Path::new("tests/golden")
             .join(path.file_stem().expect("a file has a stem"))
             .with_extension("txt");
-        if std::env::var_os("RINGSUM_REWRITE").is_some() {
+        if std::env::var("SNAPSHOTS").is_ok_and(|value| value == "overwrite") {
             fs::create_dir_all("tests/golden").expect("the folder can be made");
             fs::write(&golden, &printed).expect("the golden file can be written");
         }
