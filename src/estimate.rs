@@ -7,7 +7,6 @@ mod maps;
 mod results;
 mod surfaces;
 
-pub use cautions::sweep_cautions;
 pub use chain::{Chain, State};
 pub use forces::Strength;
 pub use maps::{field_map, ring_tables};

@@ -34,8 +34,9 @@ pub fn estimate(joint: &Joint, options: &Options) -> Result<Estimate, Failure> {
             apply(&draws, joint, &mut found.cases[case]);
         }
     }
+    let trusted = !found.flatness_decides();
     for case in &mut found.cases {
-        judge(joint, case);
+        judge(joint, case, trusted);
     }
     Ok(found)
 }
@@ -206,8 +207,9 @@ fn apply(draws: &Draws, joint: &Joint, case: &mut CaseResult) {
     case.drivers = draws.drivers();
 }
 
-/// Holds the requirement against the unfavourable end of the band.
-fn judge(joint: &Joint, case: &mut CaseResult) {
+/// Holds the requirement against the unfavourable end of the band; a field that is not trusted
+/// leaves what it meets uncertain.
+fn judge(joint: &Joint, case: &mut CaseResult, trusted: bool) {
     case.requirement = joint.service.require.and_then(|require| {
         let band = limited(case, require)?;
         let unfavourable = match require.bound {
@@ -219,7 +221,7 @@ fn judge(joint: &Joint, case: &mut CaseResult) {
             Limit::Least => value >= require.limit,
         };
         let met = match (holds(band.nominal), unfavourable.map(holds)) {
-            (true, Some(true)) => Met::Yes,
+            (true, Some(true)) if trusted => Met::Yes,
             (true, _) => Met::Uncertain,
             (false, _) => Met::No,
         };

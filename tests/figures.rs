@@ -87,6 +87,7 @@ fn sweep() -> TorqueSweep {
     TorqueSweep {
         title: "Converter box".into(),
         group: "M4 socket, 6 places".into(),
+        case: "service",
         stated: 2.2,
         largest: Some((2.9, "yield of the bolt")),
         best: Some(2.8),

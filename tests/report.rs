@@ -461,6 +461,7 @@ fn torque_sweep() -> TorqueSweep {
     TorqueSweep {
         title: "Converter box".to_owned(),
         group: "M4 socket, 6 places".to_owned(),
+        case: "service",
         stated: 1.7,
         largest: Some((2.04, "yield of the bolt")),
         best: Some(1.0),

@@ -62,7 +62,7 @@ pub struct Estimate {
 pub struct Draws {
     /// Joints drawn for low and high; 0 gives the nominal alone
     #[arg(long, value_name = "N", default_value_t = 1024,
-          value_parser = clap::value_parser!(u32).range(0..=1_048_576))]
+          value_parser = draws)]
     pub draws: u32,
     /// Seed of the draws
     #[arg(long, value_name = "N", default_value_t = 1)]
@@ -76,6 +76,21 @@ impl Draws {
             draws: self.draws,
             seed: self.seed,
         }
+    }
+}
+
+/// Draws below this cannot tell a 5 % quantile.
+const FEWEST: u32 = 20;
+/// Draws above this run past the points the sequence tells apart.
+const MOST: u32 = 1_048_576;
+
+/// A number of draws: none, or enough for the quantiles.
+fn draws(text: &str) -> Result<u32, String> {
+    match text.parse::<u32>() {
+        Ok(count) if count == 0 || (FEWEST..=MOST).contains(&count) => Ok(count),
+        _ => Err(format!(
+            "draws are 0 (nominal alone) or from {FEWEST} to {MOST}; below {FEWEST} there is no 5 % quantile"
+        )),
     }
 }
 

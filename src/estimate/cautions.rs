@@ -3,6 +3,8 @@
 mod faces;
 mod field;
 
+pub(super) use field::FLATNESS_DECIDES;
+
 use crate::{
     catalog,
     diagnostic::{Caution, registry},
@@ -31,26 +33,6 @@ pub fn gathered(chain: &Chain, cases: &[CaseResult]) -> Vec<Caution> {
     found.extend(faces::material_cautions(joint));
     found.extend(resistance_cautions(chain, cases));
     found.extend(service_cautions(chain, cases));
-    found.dedup_by(|one, other| one == other);
-    found.sort_by_key(|caution| registry::gravity(caution.code));
-    found
-}
-
-/// Cautions of a torque sweep: those of tightening, and of what the sweep cannot promise.
-pub fn sweep_cautions(joint: &Joint) -> Vec<Caution> {
-    let mut found = Vec::new();
-    for fastener in &joint.fasteners {
-        let supports = preload::Supports::in_joint(joint, fastener);
-        let name = group_label(fastener);
-        let group = preload::Group {
-            name: &name,
-            fastener,
-            supports: &supports,
-        };
-        found.extend(preload::group_cautions(&group));
-        found.extend(preload::window_cautions(&group));
-    }
-    found.push(caution("service/defer", DEFER));
     found.dedup_by(|one, other| one == other);
     found.sort_by_key(|caution| registry::gravity(caution.code));
     found

@@ -5,6 +5,7 @@ use crate::{
         Assumption, Caution,
         registry::{self, Gravity},
     },
+    estimate::cautions::FLATNESS_DECIDES,
     joint::{Limit, RequirementKind},
 };
 
@@ -205,6 +206,42 @@ pub struct Estimate {
 }
 
 impl Estimate {
+    /// The requirement at the case that stands worst to it, with the name of that case.
+    pub fn requirement(&self) -> Option<(&'static str, &RequirementResult)> {
+        let rank = |result: &RequirementResult| match result.met {
+            Met::Yes => 0,
+            Met::Uncertain => 1,
+            Met::No => 2,
+        };
+        // A limit from above is worst at the largest value, one from below at the smallest.
+        let excess = |result: &RequirementResult| match result.bound {
+            Limit::Most => result.value,
+            Limit::Least => -result.value,
+        };
+        self.cases
+            .iter()
+            .filter_map(|case| Some((case.name, case.requirement.as_ref()?)))
+            .max_by(|(_, one), (_, other)| {
+                rank(one)
+                    .cmp(&rank(other))
+                    .then(excess(one).total_cmp(&excess(other)))
+            })
+    }
+
+    /// Whether stated bow or flatness is too large for a field of flat faces.
+    pub fn flatness_decides(&self) -> bool {
+        self.cautions
+            .iter()
+            .any(|caution| caution.code == FLATNESS_DECIDES)
+    }
+
+    /// Whether a limit of strength is passed, whatever the heat says.
+    pub fn beyond_strength(&self) -> bool {
+        self.cautions
+            .iter()
+            .any(|caution| caution.code == "preload/never-for-conductance")
+    }
+
     /// Whether a caution speaks of this joint, beyond the duties of care that go with every one.
     pub fn has_cautions(&self) -> bool {
         self.cautions
@@ -239,6 +276,8 @@ pub struct TorqueSweep {
     pub title: String,
     /// Group that is varied, for people: `M4 socket, 6 places`.
     pub group: String,
+    /// The case that stands worst: `service`, `hot` or `cold`.
+    pub case: &'static str,
     /// Torque stated in the file, N m.
     pub stated: f64,
     /// Largest torque that passes every limit, N m, and the limit that ends it.

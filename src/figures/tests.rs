@@ -111,6 +111,7 @@ fn sweep(stated: f64, largest: f64, required: f64, size: f64) -> TorqueSweep {
     TorqueSweep {
         title: "Converter box on a panel".into(),
         group: "M4 socket, 6 places".into(),
+        case: "service",
         stated,
         largest: Some((largest, "pressure under the head")),
         best: Some(3.0),

@@ -72,7 +72,10 @@ pub(super) fn draw(sweep: &TorqueSweep) -> Result<Sheet, FigureError> {
         [left, WIDTH - MARGIN],
     );
     let mut sheet = Sheet::new(WIDTH);
-    let subtitle = format!("resistance against the torque of {}", sweep.group);
+    let subtitle = format!(
+        "resistance against the torque of {}, {} case",
+        sweep.group, sweep.case
+    );
     let top = sheet.header(&sweep.title, &subtitle) + flags.height() + 8.0;
     let upper = Frame {
         left,

@@ -40,6 +40,7 @@ pub fn estimate(estimate: &Estimate) -> Value {
             json!({ "source": estimate.source_plane, "sink": estimate.sink_plane }),
         ),
         ("heat", json!(estimate.heat)),
+        ("requirement", worst(estimate)),
         ("cases", json!(cases)),
         ("cautions", cautions(&estimate.cautions)),
         ("assumptions", assumptions(&estimate.assumptions)),
@@ -47,6 +48,17 @@ pub fn estimate(estimate: &Estimate) -> Value {
         object.insert(key.to_owned(), value);
     }
     Value::Object(object)
+}
+
+/// The requirement at its worst case.
+fn worst(estimate: &Estimate) -> Value {
+    estimate
+        .requirement()
+        .map_or(Value::Null, |(case, result)| {
+            let mut object = requirement(result);
+            object["case"] = json!(case);
+            object
+        })
 }
 
 /// The part of the contract that one thermal case fills.
@@ -250,6 +262,7 @@ pub fn torque(sweep: &TorqueSweep) -> Value {
         "format": FORMAT,
         "title": sweep.title,
         "group": sweep.group,
+        "case": sweep.case,
         "stated": sweep.stated,
         "largest": sweep.largest.map(|(torque, limit)| json!({ "torque": torque, "limit": limit })),
         "best": sweep.best,

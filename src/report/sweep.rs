@@ -53,14 +53,20 @@ pub fn torque(sweep: &TorqueSweep) -> String {
     let mut text = format!("{}\n", plain(&sweep.title));
     let _ = writeln!(
         text,
-        "torque of {}; the other fasteners as stated\n\
+        "torque of {}; the other fasteners as stated; {} case\n\
          sink: source to sink; added: by the joint; contact: the faces alone, without spreading\n\n{table}",
-        plain(&sweep.group)
+        plain(&sweep.group),
+        sweep.case
     );
     let _ = writeln!(
         text,
-        "stated   {} N·m (the nearest torque is marked)",
-        four(sweep.stated)
+        "stated   {} N·m{}",
+        four(sweep.stated),
+        if stated.is_some() {
+            " (the nearest torque is marked)"
+        } else {
+            ", outside this range"
+        }
     );
     if let Some((torque, limit)) = sweep.largest {
         let _ = writeln!(
@@ -69,7 +75,7 @@ pub fn torque(sweep: &TorqueSweep) -> String {
             four(torque)
         );
     }
-    text.push_str(&advice(sweep, best));
+    text.push_str(&advice(sweep, best, stated));
     if let Some((resistance, bound)) = sweep.required {
         let side = match bound {
             Limit::Most => "at most",
@@ -90,14 +96,20 @@ pub fn torque(sweep: &TorqueSweep) -> String {
 }
 
 /// What the sweep says about the best torque; never one beyond strength.
-fn advice(sweep: &TorqueSweep, best: Option<usize>) -> String {
-    match best {
-        None => "best     no torque of this range passes every strength limit\n".to_owned(),
-        Some(index) => format!(
-            "best     {} N·m: lowest source to sink of the torques that strength allows here\n",
-            four(sweep.points[index].torque)
-        ),
-    }
+fn advice(sweep: &TorqueSweep, best: Option<usize>, stated: Option<usize>) -> String {
+    let Some(index) = best else {
+        return "best     no torque of this range passes every strength limit\n".to_owned();
+    };
+    let point = &sweep.points[index];
+    let gain = stated.map_or_else(String::new, |stated| {
+        let there = sweep.points[stated].source_to_sink.nominal;
+        let gain = 1.0 - point.source_to_sink.nominal / there;
+        format!(", {} below the stated torque", percent(gain))
+    });
+    format!(
+        "best     {} N·m: lowest source to sink of the torques that strength allows here{gain}\n",
+        four(point.torque)
+    )
 }
 
 fn row(point: &TorquePoint, marks: &str) -> Vec<String> {
@@ -115,6 +127,11 @@ fn row(point: &TorquePoint, marks: &str) -> Vec<String> {
 }
 
 fn nearest(sweep: &TorqueSweep, torque: f64) -> Option<usize> {
+    let first = sweep.points.first()?.torque;
+    let last = sweep.points.last()?.torque;
+    if !(first..=last).contains(&torque) {
+        return None;
+    }
     let distance = |index: &usize| (sweep.points[*index].torque - torque).abs();
     (0..sweep.points.len()).min_by(|one, other| distance(one).total_cmp(&distance(other)))
 }

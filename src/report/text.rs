@@ -65,7 +65,7 @@ fn heading(estimate: &Estimate) -> String {
     let band = match estimate.draws {
         0 => "nominal only".to_owned(),
         draws => format!(
-            "low and high: 5 % and 95 % of {draws} draws, seed {}",
+            "resistance low and high: 5 % and 95 % of {draws} draws, seed {}",
             estimate.seed
         ),
     };
@@ -114,7 +114,7 @@ fn bolts(case: &CaseResult) -> String {
     let right = Side::Right;
     let mut text = aligned(
         &[
-            ("clamp force\nper bolt", Side::Left),
+            ("clamp force, extremes\nof friction and tool", Side::Left),
             ("\nlow", right),
             ("assembly kN\nnominal", right),
             ("\nhigh", right),

@@ -45,6 +45,7 @@ pub fn torque_sweep(joint: &Joint, options: &SweepOptions) -> Result<TorqueSweep
     };
     let stated = stated.torque;
     let chain = Chain::new(joint)?;
+    let case = worst_case(&chain)?;
     let largest = chain.largest_torque(options.group);
     let from = options.from.unwrap_or(START * stated);
     let to = options
@@ -55,7 +56,7 @@ pub fn torque_sweep(joint: &Joint, options: &SweepOptions) -> Result<TorqueSweep
     }
     let points = (0..options.steps)
         .map(|step| from + (to - from) * step as f64 / (options.steps - 1) as f64)
-        .map(|torque| point(joint, options, torque))
+        .map(|torque| point(joint, options, (case, torque)))
         .collect::<Result<Vec<TorquePoint>, Failure>>()?;
     let best = points
         .iter()
@@ -73,17 +74,47 @@ pub fn torque_sweep(joint: &Joint, options: &SweepOptions) -> Result<TorqueSweep
         best,
         points,
         required: required(joint),
-        cautions: estimate::sweep_cautions(joint),
+        case: joint.service.cases[case].name,
+        cautions: estimate::nominal(&chain, &options.chain)?.cautions,
     })
 }
 
-fn point(joint: &Joint, options: &SweepOptions, torque: f64) -> Result<TorquePoint, Failure> {
+/// The case in which the joint stands worst: of most resistance, or of least where the requirement
+/// asks for at least so much.
+fn worst_case(chain: &Chain) -> Result<usize, Failure> {
+    let cases = chain.joint().service.cases.len();
+    let resistances = (0..cases)
+        .map(|case| {
+            Ok(chain
+                .state(case, &estimate::Realisation::default())?
+                .path
+                .source_to_sink)
+        })
+        .collect::<Result<Vec<f64>, Failure>>()?;
+    let least = matches!(required(chain.joint()), Some((_, Limit::Least)));
+    let key = |case: &usize| {
+        if least {
+            -resistances[*case]
+        } else {
+            resistances[*case]
+        }
+    };
+    Ok((0..cases)
+        .max_by(|one, other| key(one).total_cmp(&key(other)))
+        .unwrap_or(0))
+}
+
+fn point(
+    joint: &Joint,
+    options: &SweepOptions,
+    (case, torque): (usize, f64),
+) -> Result<TorquePoint, Failure> {
     let mut changed = joint.clone();
     if let Tightening::Torque(tightening) = &mut changed.fasteners[options.group].tightening {
         tightening.torque = torque;
     }
     let chain = Chain::new(&changed)?;
-    let nominal = chain.state(0, &estimate::Realisation::default())?;
+    let nominal = chain.state(case, &estimate::Realisation::default())?;
     let path = &nominal.path;
     let (source_to_sink, contact, added) = (
         path.source_to_sink,
@@ -93,7 +124,7 @@ fn point(joint: &Joint, options: &SweepOptions, torque: f64) -> Result<TorquePoi
     let strength = chain.strength(options.group);
     let draws = match options.chain.draws {
         0 => None,
-        _ => Some(draws(&chain, 0, &options.chain)?),
+        _ => Some(draws(&chain, case, &options.chain)?),
     };
     let band = |nominal: f64, of: fn(&super::Draws, f64) -> estimate::Band| {
         draws

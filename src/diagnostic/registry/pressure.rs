@@ -2,7 +2,7 @@
 
 use crate::diagnostic::registry::{
     Entry,
-    Gravity::{Note, Range},
+    Gravity::{Grave, Note, Range},
 };
 
 pub(super) const ENTRIES: &[Entry] = &[
@@ -122,6 +122,17 @@ pub(super) const ENTRIES: &[Entry] = &[
              air the true joint added 1.4 and 1.8 times what the closed gap gives.",
             "Take the upper end of the band for a hot case, fill the joint, or solve the contact of \
              the whole joint.",
+        ],
+    ),
+    Grave.entry(
+        "pressure/flatness-decides",
+        "Bow or flatness is too large for flat faces",
+        [
+            "The stated out-of-flatness of both faces exceeds 0.1 mm, or half of the filler's \
+             thickness (judgement). It then decides where the faces touch and how thick the gap or \
+             the filler is, and the cone, which takes the faces as flat, cannot tell.",
+            "Measure and mend the faces, take a filler that is thicker than the gap, or solve the \
+             contact with the bow as initial gap. No requirement counts as met until then.",
         ],
     ),
 ];

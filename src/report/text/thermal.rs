@@ -122,8 +122,15 @@ pub fn verdict(estimate: &Estimate, case: &CaseResult) -> String {
         text = wrapped(&text, WIDTH, 2);
         text.push('\n');
     }
-    if let Some(requirement) = &case.requirement {
-        text.push_str(&wrapped(&required(requirement, estimate.draws), WIDTH, 2));
+    if let Some((name, requirement)) = estimate.requirement() {
+        let mut line = required(requirement, estimate.draws);
+        if estimate.cases.len() > 1 {
+            let _ = write!(line, " ({name} case, the worst)");
+        }
+        if estimate.beyond_strength() {
+            line.push_str("; of heat alone: a limit of strength does not hold, see the cautions");
+        }
+        text.push_str(&wrapped(&line, WIDTH, 2));
         text.push('\n');
     }
     text
@@ -151,7 +158,7 @@ fn required(requirement: &RequirementResult, draws: u32) -> String {
             format!("UNCERTAIN: met at nominal, {value} {unit}; no low and high were drawn")
         }
         Met::Uncertain => {
-            format!("UNCERTAIN: met at nominal, {value} {unit} at the unfavourable end")
+            format!("UNCERTAIN: {value} {unit} at the unfavourable end, met at nominal")
         }
     };
     format!(
