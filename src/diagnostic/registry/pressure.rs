@@ -128,7 +128,7 @@ pub(super) const ENTRIES: &[Entry] = &[
         "pressure/flatness-decides",
         "Bow or flatness is too large for flat faces",
         [
-            "The stated out-of-flatness of both faces exceeds 0.1 mm, or half of the filler's \
+            "The stated out-of-flatness of both faces exceeds 0.2 mm, or half of the filler's \
              thickness (judgement). It then decides where the faces touch and how thick the gap or \
              the filler is, and the cone, which takes the faces as flat, cannot tell.",
             "Measure and mend the faces, take a filler that is thicker than the gap, or solve the \

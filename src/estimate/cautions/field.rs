@@ -133,7 +133,7 @@ pub(in crate::estimate) const FLATNESS_DECIDES: &str = "pressure/flatness-decide
 /// Out-of-flatness of both faces together from which the cone's flat faces mean little, m; the
 /// bolts of the reference joints opened their plates by 4 to 8 µm, a bow of 30 µm changed them by
 /// 1 to 3 % (judgement).
-const LARGE: f64 = 1e-4;
+const LARGE: f64 = 2e-4;
 /// The same as a share of the thickness of a filler (judgement).
 const LARGE_SHARE: f64 = 0.5;
 
