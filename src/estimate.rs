@@ -15,6 +15,7 @@ pub use results::*;
 pub use crate::resistance::RingRow;
 
 use crate::{
+    diagnostic::Assumption,
     joint::{Fastener, Joint, Sink, Zone},
     resistance::Path,
 };
@@ -141,8 +142,20 @@ pub fn nominal(chain: &Chain, options: &Options) -> Result<Estimate, Failure> {
         heat: joint.service.heat,
         cautions: cautions::gathered(chain, &cases),
         cases,
-        assumptions: joint.assumptions.clone(),
+        assumptions: assumptions(joint),
     })
+}
+
+/// What the file did not state, and what this chain takes for itself.
+fn assumptions(joint: &Joint) -> Vec<Assumption> {
+    let mut all = joint.assumptions.clone();
+    all.push(Assumption {
+        field: "service.temperature".to_owned(),
+        value: "properties at the mean sink surface".to_owned(),
+        why: "conductivity, gas and contraction are taken at the sink temperature of each case"
+            .to_owned(),
+    });
+    all
 }
 
 /// One thermal case, upstream first: force, pressure, conductance, resistance, temperature.
@@ -172,7 +185,8 @@ fn case_result(chain: &Chain, case: usize, numerical_error: f64) -> Result<CaseR
         bolts,
         pressure,
         results: results(path),
-        resistance_lower: Some(path.resistance_lower),
+        // Both hold: the series of isothermal planes, and the same path without a joint.
+        resistance_lower: Some(path.resistance_lower.max(path.perfect_contact)),
         resistance_upper: path.resistance_upper,
         numerical_error,
         footprint: chain.footprint(),

@@ -190,7 +190,8 @@ mod tests {
         plate/count plate/misplaced plate/not-round plate/heads-overlap fastener/no-seat
         material/missing-property
         preload/temperature-not-acting pressure/gap-ignored
-        pressure/flatness-decides preload/friction-scatter preload/over-yield preload/over-90-percent preload/over-proof
+        pressure/flatness-decides pressure/filler-spreads resistance/small-source
+        preload/friction-scatter preload/over-yield preload/over-90-percent preload/over-proof
         preload/head-pressure preload/short-engagement preload/low-use preload/suspicious-torque
         preload/running-torque preload/no-yield-strength preload/countersunk
         preload/never-for-conductance preload/no-torque-card preload/slip-and-fatigue

@@ -3,7 +3,7 @@
 mod faces;
 mod field;
 
-pub(super) use field::FLATNESS_DECIDES;
+pub(super) use field::{FLATNESS_DECIDES, GAP_IGNORED};
 
 use crate::{
     catalog,

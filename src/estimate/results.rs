@@ -5,7 +5,7 @@ use crate::{
         Assumption, Caution,
         registry::{self, Gravity},
     },
-    estimate::cautions::FLATNESS_DECIDES,
+    estimate::cautions::{FLATNESS_DECIDES, GAP_IGNORED},
     joint::{Limit, RequirementKind},
 };
 
@@ -290,6 +290,15 @@ pub struct TorqueSweep {
     pub required: Option<(f64, Limit)>,
     /// Cautions.
     pub cautions: Vec<Caution>,
+}
+
+impl TorqueSweep {
+    /// Whether the gap between the bolts, which grows with the force, matters and is not known.
+    pub fn gap_unknown(&self) -> bool {
+        self.cautions
+            .iter()
+            .any(|caution| caution.code == GAP_IGNORED)
+    }
 }
 
 /// The plan of the joint and its fields at nominal, for drawings.

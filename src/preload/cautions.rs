@@ -65,26 +65,25 @@ pub fn opened(name: &str, balance: f64) -> Option<Caution> {
 
 /// Cautions that belong to a printed torque window.
 pub fn window_cautions(group: &Group<'_>) -> Vec<Caution> {
-    let Some((torque, limit)) = largest_torque(group.fastener, group.supports) else {
-        return Vec::new();
-    };
-    vec![
-        caution(
+    let mut found = Vec::new();
+    if let Some((torque, limit)) = largest_torque(group.fastener, group.supports) {
+        found.push(caution(
             "preload/no-torque-card",
             format!(
                 "{}: {torque:.3} N·m is estimated from minimum strengths and ends at {limit}; it replaces neither \
                  the torque card of the product nor a trial on the real stack.",
                 group.name
             ),
+        ));
+    }
+    found.push(caution(
+        "preload/slip-and-fatigue",
+        format!(
+            "{}: external load, slip, fatigue and vibration are not in these limits.",
+            group.name
         ),
-        caution(
-            "preload/slip-and-fatigue",
-            format!(
-                "{}: external load, slip, fatigue and vibration are not in these limits.",
-                group.name
-            ),
-        ),
-    ]
+    ));
+    found
 }
 
 fn over_strength(group: &Group<'_>) -> Vec<Caution> {

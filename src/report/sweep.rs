@@ -97,6 +97,11 @@ pub fn torque(sweep: &TorqueSweep) -> String {
 
 /// What the sweep says about the best torque; never one beyond strength.
 fn advice(sweep: &TorqueSweep, best: Option<usize>, stated: Option<usize>) -> String {
+    if best.is_none() && sweep.gap_unknown() {
+        return "best     not told: in gas the gap between the bolts grows with the force, so that more torque may \
+                be worse, and this field does not know the gap\n"
+            .to_owned();
+    }
     let Some(index) = best else {
         return "best     no torque of this range passes every strength limit\n".to_owned();
     };

@@ -135,4 +135,16 @@ pub(super) const ENTRIES: &[Entry] = &[
              contact with the bow as initial gap. No requirement counts as met until then.",
         ],
     ),
+    Range.entry(
+        "pressure/filler-spreads",
+        "The layer between the plates spreads the load",
+        [
+            "The cone is the pressure between bare plates: all force within a few millimetres of each \
+             bolt, nothing between them. A pad, foil or paste is softer than the plates and carries \
+             part of the force farther out. Where the filler's resistance falls with pressure the \
+             faces between the bolts conduct better than told here.",
+            "Compare with the filler's value at the mean pressure, total force over the area; solve \
+             the contact with the layer's stiffness where it decides.",
+        ],
+    ),
 ];
