@@ -99,7 +99,7 @@ fn curves(rings: &[Vec<RingRow>]) -> Vec<Curve> {
     groups
         .into_iter()
         .map(|group| {
-            let table = &rings[group[0]];
+            let table = telling(&rings[group[0]]);
             let hole = table.first().map(|ring| (ring.radius[0], 0.0));
             Curve {
                 label: label(&group, rings.len()),
@@ -110,6 +110,23 @@ fn curves(rings: &[Vec<RingRow>]) -> Vec<Curve> {
             }
         })
         .collect()
+}
+
+/// Share of the total at which the rest of a curve has nothing left to tell.
+const TOLD: f64 = 0.995;
+/// How far past that place, and past the contact, a curve is drawn, as a factor on the radius.
+const PAST: f64 = 1.4;
+
+/// The rings up to a little past the contact and the place where nearly all is gathered.
+fn telling(table: &[RingRow]) -> &[RingRow] {
+    let total = table.last().map_or(0.0, |ring| ring.cumulative);
+    let edge = table
+        .iter()
+        .take_while(|ring| ring.pressure > 0.0 || ring.cumulative < TOLD * total)
+        .last()
+        .map_or(f64::INFINITY, |ring| PAST * ring.radius[1]);
+    let end = table.partition_point(|ring| ring.radius[1] <= edge);
+    &table[..end]
 }
 
 /// Whether two curves lie on each other: the same radii in contact, and the same growth.
