@@ -4,6 +4,7 @@
 //! inside, everything is SI. Names are compared without regard to case, spaces and dashes.
 
 mod cold;
+mod families;
 mod fillers;
 mod finishes;
 mod friction;
@@ -22,6 +23,7 @@ mod seats;
 mod threads;
 
 pub use cold::{ColdFault, Property};
+pub use families::{family, family_words, holding, unified};
 pub use fillers::{filler, fillers};
 pub use finishes::{finish, finishes};
 pub use friction::{friction, friction_record};

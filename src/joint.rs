@@ -203,7 +203,7 @@ fn assembled(file: &Record, collector: &mut Collector) -> Option<Joint> {
     let sink = plates::sink(&plates[1], collector);
     let contact = contact::read(file, &plates, collector);
     let fasteners = fasteners::read(file, &plates, collector);
-    let losses = contact::losses(file, &plates, fasteners.as_deref(), collector);
+    let losses = contact::losses(file, collector);
     let plates: Option<Vec<Plate>> = plates
         .into_iter()
         .map(plates::PlateDraft::finished)

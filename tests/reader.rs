@@ -1,5 +1,10 @@
 //! Good joint files and what they become.
 
+#[path = "reader/advice.rs"]
+mod advice;
+#[path = "reader/fillers.rs"]
+mod fillers;
+
 use std::{fmt::Write, fs, path::PathBuf, time::Instant};
 
 use proptest::prelude::*;
@@ -180,7 +185,7 @@ grade = "A2-70"
 head = "socket"
 washer = "ISO 7089"
 hole = { base = "4.5 mm" }
-engagement = { kind = "insert", length = "6 mm" }
+engagement = { kind = "insert", length = "4 mm" }
 torque = { value = "1.7 N·m", tolerance = "5 %", running = "0.15 N·m" }
 friction = { class = "B" }
 at = [["7 mm", "7 mm"], ["153 mm", "7 mm"], ["7 mm", "113 mm"], ["153 mm", "113 mm"]]
@@ -236,7 +241,7 @@ fn the_sketch_of_the_design_reads_whole() {
     let [inserts, tapped] = joint.fasteners.as_slice() else {
         panic!("two groups are stated");
     };
-    assert_eq!(inserts.engagement, Engagement::Insert { length: 6e-3 });
+    assert_eq!(inserts.engagement, Engagement::Insert { length: 4e-3 });
     assert_eq!(inserts.nut_seat, None);
     assert!(inserts.washer_thickness > 0.0);
     // ISO 7089 M4: 9 mm wide, 0.8 mm thick; ISO 4762 M4: dw 6.53 mm; the spread is the smaller.
@@ -252,8 +257,8 @@ fn the_sketch_of_the_design_reads_whole() {
     assert!(near(filler.factor, 1.25));
     assert!(matches!(filler.kind, FillerKind::Paste { applied, .. } if near(applied, 80e-6)));
     let losses = joint.losses.expect("they are stated");
-    // Ra 1.6 µm is Rz 10 µm, the second row: thread 3, one seat 3, two interfaces of 2 µm (washer).
-    assert!(near(losses.settling, 10e-6), "{losses:?}");
+    // `guide` leaves the sum to the stack of each bolt.
+    assert_eq!(losses.settling, None);
 }
 
 #[test]

@@ -25,7 +25,7 @@ pub struct ColdFault {
     pub temperature: f64,
     /// What is missing there.
     pub missing: Property,
-    /// Range in which it is known away from room temperature, K.
+    /// Range in which it is known, away from room temperature when asked for the cold, K.
     pub known: Option<[f64; 2]>,
 }
 
@@ -36,6 +36,13 @@ pub enum Property {
     Conductivity,
     /// Integrated expansion.
     Contraction,
+}
+
+impl ColdFault {
+    /// Whether the data end below the temperature: they lack the heat, not the cold.
+    pub fn is_hot(&self) -> bool {
+        self.temperature > EXPANSION_SERVES[1]
+    }
 }
 
 impl fmt::Display for ColdFault {
@@ -49,6 +56,13 @@ impl fmt::Display for ColdFault {
             Property::Conductivity => ("conductivity", "curve k(T)"),
             Property::Contraction => ("contraction", "table ΔL/L(T)"),
         };
+        if let Some([_, end]) = self.known.filter(|_| self.is_hot()) {
+            return write!(
+                out,
+                "the expansion of {material} is not known at {temperature:.0} K: its coefficient \
+                 serves up to {end:.0} K"
+            );
+        }
         write!(
             out,
             "the {what} of {material} is not known at {temperature:.0} K: "
@@ -110,6 +124,9 @@ impl Known<'_> {
             missing,
             known: match missing {
                 Property::Conductivity => self.fit.map(|fit| fit.valid),
+                Property::Contraction if temperature > EXPANSION_SERVES[1] => {
+                    Some(EXPANSION_SERVES)
+                }
                 Property::Contraction => self
                     .contraction
                     .and_then(|table| Some([table.first()?.0, EXPANSION_SERVES[1]])),
@@ -322,6 +339,19 @@ mod tests {
              and room-temperature data do not serve in the cold"
         );
         assert!(ceramic.contraction_between(293.0, 220.0).is_ok());
+    }
+
+    #[test]
+    fn the_heat_is_refused_in_its_own_words() {
+        for name in ["Al 6061-T6", "Alumina 96 %"] {
+            let fault = material(name).unwrap().contraction_between(293.0, 1273.0);
+            assert_eq!(
+                fault.unwrap_err().to_string(),
+                format!(
+                    "the expansion of {name} is not known at 1273 K: its coefficient serves up to 450 K"
+                )
+            );
+        }
     }
 
     #[test]

@@ -20,7 +20,7 @@ pub fn nearest<'a>(name: &str, known: impl Iterator<Item = &'a str>) -> Option<S
                 return None;
             }
             let edits = edits(&name, &letters);
-            let allowed = name.len().max(letters.len()).div_ceil(3);
+            let allowed = name.len().max(letters.len()) / 3;
             (edits <= allowed && edits < letters.len()).then_some((edits, candidate))
         })
         .min_by_key(|&(edits, _)| edits)

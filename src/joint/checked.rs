@@ -484,8 +484,9 @@ pub enum MeasuredKind {
 /// Losses of clamp force that the file asks for.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Losses {
-    /// Sum of settling over all contacts, m; from the guide values when the file says so.
-    pub settling: f64,
+    /// Sum of settling over all contacts of one bolt, m; none stands for the guide values of its
+    /// stack.
+    pub settling: Option<f64>,
     /// Short-term relaxation as a fraction of the clamp force.
     pub relaxation: f64,
 }

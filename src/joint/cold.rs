@@ -1,4 +1,4 @@
-//! What the cold forbids: room-temperature data, and the laws of contact below 30 K.
+//! What heat and cold forbid: data beyond their temperatures, and the laws of contact below 30 K.
 
 use crate::{
     catalog::{ColdFault, Material},
@@ -30,10 +30,8 @@ pub(super) fn check(joint: &Joint, file: &Record, collector: &mut Collector) {
             .iter()
             .find_map(|case| bolt(fastener, joint, case).err());
         if let Some(cold) = cold {
-            collector.report(
-                cold_fault(&cold, &record.span("grade"))
-                    .help("choose a grade whose metal is known in the cold, such as `A2-70`"),
-            );
+            let advice = "choose a grade whose metal is known in the cold, such as `A2-70`";
+            collector.report(data_fault(&cold, &record.span("grade"), advice));
         }
     }
     if is_bare(joint) {
@@ -75,7 +73,9 @@ fn cold_data(material: &Material, joint: &Joint, span: &Span, collector: &mut Co
             .err()
             .or_else(|| contraction(material, joint, case).err());
         if let Some(cold) = unknown {
-            collector.report(cold_fault(&cold, span));
+            let advice = "state your own in a [[material]] table: `conductivity`, `expansion` and \
+                          `valid_from = \"77 K\"`";
+            collector.report(data_fault(&cold, span, advice));
             return;
         }
     }
@@ -93,12 +93,19 @@ fn bolt(fastener: &Fastener, joint: &Joint, case: &Case) -> Result<f64, ColdFaul
     grade.contraction_between(joint.service.assembly_temperature, case.temperature)
 }
 
-fn cold_fault(cold: &ColdFault, span: &Span) -> crate::diagnostic::Fault {
-    fault("material/cold-data", span, cold.to_string())
+/// Data that do not reach the temperature; `advice` mends the cold, nothing the heat.
+fn data_fault(missing: &ColdFault, span: &Span, advice: &str) -> crate::diagnostic::Fault {
+    if missing.is_hot() {
+        return fault("material/above-range", span, missing.to_string())
+            .expecting("no data at this temperature")
+            .help(
+                "lower the temperature: beyond this neither the catalogue nor a [[material]] of \
+                 the file is carried on",
+            );
+    }
+    fault("material/cold-data", span, missing.to_string())
         .expecting("no data at this temperature")
-        .help(
-            "state your own in a [[material]] table: `conductivity`, `expansion` and `valid_from = \"77 K\"`",
-        )
+        .help(advice)
 }
 
 fn cold_contact(file: &Record, case: &Case) -> crate::diagnostic::Fault {

@@ -8,6 +8,9 @@ use crate::{
 /// So many faults are told; a file with more is not being read by anyone.
 pub(super) const MOST_FAULTS: usize = 200;
 
+/// Most names that one fault suggests, unless they are a family of the catalogue.
+const MOST_SUGGESTED: usize = 3;
+
 /// What one reading found.
 #[derive(Debug, Default)]
 pub(super) struct Collector {
@@ -89,6 +92,8 @@ pub(super) trait Wording {
     fn help(self, help: impl Into<String>) -> Self;
     /// The nearest known name, or those that hold it.
     fn nearest<'a>(self, name: &str, known: impl Iterator<Item = &'a str>) -> Self;
+    /// The names that were probably meant, if any.
+    fn meaning(self, names: &[&str]) -> Self;
 }
 
 impl Wording for Fault {
@@ -102,13 +107,17 @@ impl Wording for Fault {
         self
     }
 
-    fn nearest<'a>(mut self, name: &str, known: impl Iterator<Item = &'a str>) -> Self {
+    fn nearest<'a>(self, name: &str, known: impl Iterator<Item = &'a str>) -> Self {
         let known: Vec<&str> = known.collect();
-        let near = diagnostic::nearest(name, known.iter().copied())
-            .map(|near| format!("`{near}`"))
-            .or_else(|| holding(name, &known));
-        if let Some(near) = near {
-            let help = format!("did you mean {near}?");
+        match diagnostic::nearest(name, known.iter().copied()) {
+            Some(near) => self.meaning(&[&near]),
+            None => self.meaning(&holding(name, known.into_iter())),
+        }
+    }
+
+    fn meaning(mut self, names: &[&str]) -> Self {
+        if !names.is_empty() {
+            let help = format!("did you mean {}?", listed(names));
             self.help = Some(match self.help {
                 Some(more) => format!("{help} {more}"),
                 None => help,
@@ -118,17 +127,17 @@ impl Wording for Fault {
     }
 }
 
-/// Known names that hold the whole of a short one: `brass` means one of several.
-fn holding(name: &str, known: &[&str]) -> Option<String> {
+/// Known names that hold the whole of a short one, each once: `brass` means one of several.
+fn holding<'a>(name: &str, known: impl Iterator<Item = &'a str>) -> Vec<&'a str> {
     let name = name.trim().to_lowercase();
+    let mut found = Vec::new();
     if name.chars().count() < 3 {
-        return None;
+        return found;
     }
-    let found: Vec<&str> = known
-        .iter()
-        .copied()
-        .filter(|known| known.to_lowercase().contains(&name))
-        .take(3)
-        .collect();
-    (!found.is_empty()).then(|| listed(&found))
+    for known in known.filter(|known| known.to_lowercase().contains(&name)) {
+        if found.len() < MOST_SUGGESTED && !found.contains(&known) {
+            found.push(known);
+        }
+    }
+    found
 }

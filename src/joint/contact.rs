@@ -3,13 +3,12 @@
 use crate::{
     catalog::MaterialKind,
     joint::{
-        ConeRule, ConeShape, Contact, Fastener, Law, Losses,
+        ConeRule, ConeShape, Contact, Law, Losses,
         collector::{Collector, Wording, fault},
         plates::PlateDraft,
         record::{PerPlate, Record},
         seats::unknown_plate,
     },
-    units::{self, Quantity},
 };
 
 /// Hemispherical emissivity of bare machined metal, and of oxide films and non-metals (judgement).
@@ -17,17 +16,6 @@ const EMISSIVITY: [f64; 2] = [0.1, 0.8];
 
 /// Short-term relaxation of all-metal joints in NASA practice (memory).
 const RELAXATION: f64 = 0.05;
-
-/// Guide values of settling by roughness Rz: below 10 µm, to 40 µm, above; in the thread, per
-/// head or nut bearing, per inner interface, m (VDI 2230 table 5, axial load, memory).
-const SETTLING: [[f64; 3]; 3] = [
-    [3.0e-6, 2.5e-6, 1.5e-6],
-    [3.0e-6, 3.0e-6, 2.0e-6],
-    [3.0e-6, 4.0e-6, 3.0e-6],
-];
-
-/// Rz over Rq taken to enter the guide values (practice, memory).
-const RZ_OVER_RQ: f64 = 5.0;
 
 /// Reads `[contact]` with the emissivity of both faces.
 pub(super) fn read(
@@ -168,13 +156,13 @@ fn assumed_emissivity(plate: &PlateDraft, collector: &mut Collector) -> Option<f
 
 /// Reads `[losses]`: the outer option is none when it is faulty.
 #[expect(clippy::option_option, reason = "faulty and not stated are two things")]
-pub(super) fn losses(
-    file: &Record,
-    plates: &[PlateDraft; 2],
-    fasteners: Option<&[Fastener]>,
-    collector: &mut Collector,
-) -> Option<Option<Losses>> {
+pub(super) fn losses(file: &Record, collector: &mut Collector) -> Option<Option<Losses>> {
     if !file.has("losses") {
+        collector.assume(
+            "losses",
+            "none at nominal; guide settling and 5 % relaxation in the low force",
+            "not stated",
+        );
         return Some(None);
     }
     let record = file.record("losses")?;
@@ -191,38 +179,19 @@ pub(super) fn losses(
         Some(relaxation) => relaxation,
     };
     let settling = match (record.number("settling"), record.text("settling")) {
-        (Some(settling), _) => settling,
+        (Some(settling), _) => Some(settling),
         (None, None) if record.has("settling") => return None,
         _ => {
-            let settling = guide_settling(plates, fasteners?)?;
             collector.assume(
                 record.at("settling"),
-                units::show(settling, Quantity::Length),
-                "guide values of VDI 2230 for thread, seats and interface (from memory)",
+                "guide values",
+                "VDI 2230 for thread, seats and interfaces of each bolt (from memory)",
             );
-            settling
+            None
         }
     };
     Some(Some(Losses {
         settling,
         relaxation,
     }))
-}
-
-/// Sum of the guide values over thread, seats and inner interfaces, m; the largest of all groups.
-fn guide_settling(plates: &[PlateDraft; 2], fasteners: &[Fastener]) -> Option<f64> {
-    let mut roughest: f64 = 0.0;
-    for plate in plates {
-        roughest = roughest.max(RZ_OVER_RQ * plate.finish.as_ref()?.roughness.nominal);
-    }
-    let row = SETTLING[usize::from(roughest >= 10e-6) + usize::from(roughest >= 40e-6)];
-    let [thread, bearing, interface] = row;
-    fasteners
-        .iter()
-        .map(|fastener| {
-            let bearings = 1.0 + f64::from(u8::from(fastener.nut_seat.is_some()));
-            let interfaces = 1.0 + f64::from(u8::from(fastener.washer_thickness > 0.0));
-            thread + bearings * bearing + interfaces * interface
-        })
-        .reduce(f64::max)
 }

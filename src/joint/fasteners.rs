@@ -2,6 +2,7 @@
 
 use crate::{
     catalog::{self, Grade, Thread},
+    diagnostic::Fault,
     joint::{
         Engagement, Fastener, MOST_PLACES,
         collector::{Collector, Wording, fault},
@@ -9,7 +10,7 @@ use crate::{
         patterns,
         plates::PlateDraft,
         record::Record,
-        seats::{self, Bolt, Seats, unknown_plate},
+        seats::{self, Bolt, Parts, Seats, unknown_plate},
         tightening,
         tree::short,
         walk::too_many,
@@ -56,9 +57,9 @@ pub(super) fn read(
 /// Tells the faults of fasteners that do not depend on the plates, when these are not known.
 pub(super) fn read_alone(file: &Record, collector: &mut Collector) {
     for record in file.records("fastener") {
-        if let Some(thread) = thread(record, collector) {
-            grade(record, thread, collector);
-        }
+        let thread = thread(record, collector);
+        grade(record, thread, collector);
+        Parts::read(record, thread, collector);
         tightening::read(record, collector);
     }
 }
@@ -70,7 +71,8 @@ fn group(
     collector: &mut Collector,
 ) -> (Option<Fastener>, Option<Site>) {
     let thread = thread(record, collector);
-    let grade = thread.and_then(|thread| grade(record, thread, collector));
+    let grade = grade(record, thread, collector);
+    let parts = Parts::read(record, thread, collector);
     let head_plate = head_plate(record, plates, collector);
     let tightening = tightening::read(record, collector);
     let places = patterns::read(record, plates[0].outline, collector);
@@ -81,6 +83,7 @@ fn group(
             thread,
             engagement,
             head_plate,
+            parts,
         };
         let holes = seats::holes(bolt, plates, collector)?;
         Some(Seated {
@@ -147,7 +150,11 @@ fn thread(record: &Record, collector: &mut Collector) -> Option<&'static Thread>
     let name = record.text("thread")?;
     let thread = catalog::thread(name);
     if thread.is_none() {
-        let known = catalog::threads().iter().map(|thread| thread.name.as_str());
+        // A thread of other digits is another thread, not a slip.
+        let known = catalog::threads()
+            .iter()
+            .map(|thread| thread.name.as_str())
+            .filter(|known| digits(known) == digits(name) || known.contains(name.trim()));
         collector.report(
             fault(
                 "name/unknown",
@@ -162,16 +169,31 @@ fn thread(record: &Record, collector: &mut Collector) -> Option<&'static Thread>
     thread
 }
 
-fn grade(record: &Record, thread: &Thread, collector: &mut Collector) -> Option<&'static Grade> {
+fn digits(name: &str) -> String {
+    name.chars().filter(char::is_ascii_digit).collect()
+}
+
+/// The grade in the size of the thread; where the thread is faulty its name is only checked.
+fn grade(
+    record: &Record,
+    thread: Option<&Thread>,
+    collector: &mut Collector,
+) -> Option<&'static Grade> {
     let name = record.text("grade")?;
-    let grade = catalog::grade(name, thread.diameter);
+    let size = thread.map_or_else(String::new, |thread| format!(" for {}", thread.name));
+    let grade = if let Some(thread) = thread {
+        catalog::grade(name, thread.diameter)
+    } else {
+        let mut sizes = catalog::threads().iter();
+        sizes.find_map(|thread| catalog::grade(name, thread.diameter))
+    };
     if grade.is_none() {
         let known = catalog::grades().iter().map(|grade| grade.name.as_str());
         collector.report(
             fault(
                 "name/unknown",
                 &record.span("grade"),
-                format!("no strength grade `{}` for {}", short(name), thread.name),
+                format!("no strength grade `{}`{size}", short(name)),
             )
             .expecting("expected a grade such as `8.8` or `A2-70`")
             .help("`ringsum list grades` names all")
@@ -215,7 +237,13 @@ fn engagement(
         return Some(Engagement::Nut);
     }
     let length = match table.number("length") {
-        Some(length) => length,
+        Some(length) => {
+            if let Some(thickness) = far.thickness {
+                let fits = length <= thickness * (1.0 + 1e-9);
+                collector.require(fits, || too_long(table, length, (&far.name, thickness)));
+            }
+            length
+        }
         None if table.has("length") => return None,
         None => {
             let thickness = far.thickness?;
@@ -240,4 +268,20 @@ fn engagement(
     } else {
         Engagement::Tapped { length }
     })
+}
+
+/// A thread longer than the plate it is cut in.
+fn too_long(table: &Record, length: f64, (plate, thickness): (&str, f64)) -> Fault {
+    let thickness = units::show(thickness, Quantity::Length);
+    fault(
+        "value/range",
+        &table.span("length"),
+        format!(
+            "{} of thread are engaged in plate `{}`, which is {thickness} thick",
+            units::show(length, Quantity::Length),
+            short(plate)
+        ),
+    )
+    .expecting(format!("at most {thickness}"))
+    .help("the thread ends with the plate: state what is engaged in it")
 }

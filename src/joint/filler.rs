@@ -1,5 +1,7 @@
 //! What fills the joint, and what the user has measured.
 
+mod layer;
+
 use crate::{
     catalog::{self, FillerRecord},
     joint::{
@@ -113,7 +115,7 @@ fn kind(
             collector.report(missing(record, "table", &line("table")));
             None
         }
-        _ => layer(record, known, collector),
+        _ => layer::read(record, known, collector),
     }
 }
 
@@ -150,69 +152,6 @@ fn conductivity(
 fn table(record: &Record, collector: &mut Collector) -> Option<FillerKind> {
     Some(FillerKind::Table {
         points: rising(record, "table", collector)?,
-    })
-}
-
-fn layer(
-    record: &Record,
-    known: Option<&FillerRecord>,
-    collector: &mut Collector,
-) -> Option<FillerKind> {
-    if record.has("bond_line") && record.has("thickness") {
-        collector.report(two_ways(record, ["bond_line", "thickness"]));
-        return None;
-    }
-    let changed = ["bond_line", "thickness", "conductivity"]
-        .iter()
-        .any(|key| record.has(key));
-    if let Some(known) = known
-        && !changed
-        && !known.points.is_empty()
-    {
-        collector.assume(
-            record.at("table"),
-            format!("{} points of `{}`", known.points.len(), known.name),
-            known.source.clone(),
-        );
-        return Some(FillerKind::Table {
-            points: known.points.clone(),
-        });
-    }
-    let key = if record.has("bond_line") {
-        "bond_line"
-    } else {
-        "thickness"
-    };
-    let supplied = known.and_then(|known| known.thickness.as_ref());
-    let thickness = match (record.number(key), supplied) {
-        (None, _) if record.has(key) => None,
-        (None, Some(supplied)) => {
-            collector.assume(
-                record.at(key),
-                units::show(supplied.value, Quantity::Length),
-                "thickness as supplied, uncompressed",
-            );
-            Some(supplied.value)
-        }
-        (None, None) => {
-            collector.report(missing(record, "thickness", &line("thickness")));
-            None
-        }
-        (thickness, _) => thickness,
-    };
-    let conductivity = conductivity(record, known, collector);
-    let boundary = match record.number("boundary") {
-        None if record.has("boundary") => return None,
-        None => {
-            collector.assume(record.at("boundary"), "0", "not stated");
-            0.0
-        }
-        Some(boundary) => boundary,
-    };
-    Some(FillerKind::Layer {
-        conductivity: conductivity?,
-        thickness: thickness?,
-        boundary,
     })
 }
 

@@ -4,6 +4,7 @@ use std::collections::BTreeMap;
 
 use crate::{
     catalog::{self, ConductivityFit, Datum, FitForm, Material, MaterialKind, Status},
+    diagnostic,
     joint::{
         collector::{Collector, Wording, fault},
         record::{Record, Spread, Width},
@@ -19,6 +20,9 @@ const POISSON: f64 = 0.33;
 
 /// The temperature at which the catalogue starts to count contraction, K.
 const REFERENCE_TEMPERATURE: f64 = 293.0;
+
+/// Most materials that one fault suggests.
+const MOST_SUGGESTED: usize = 5;
 
 /// Materials of the file by name; none where the table is faulty.
 pub(super) type Own = BTreeMap<String, Option<Material>>;
@@ -82,13 +86,7 @@ fn base(record: &Record, name: &str, own: &Own, collector: &mut Collector) -> Op
     if collector.is_full() {
         return None;
     }
-    let known = own
-        .keys()
-        .map(String::as_str)
-        .chain(catalog::materials().iter().flat_map(|material| {
-            std::iter::once(material.name.as_str())
-                .chain(material.aliases.iter().map(String::as_str))
-        }));
+    let mine: Vec<&str> = own.keys().map(String::as_str).collect();
     collector.report(
         fault(
             "name/unknown",
@@ -97,9 +95,62 @@ fn base(record: &Record, name: &str, own: &Own, collector: &mut Collector) -> Op
         )
         .expecting("not in the catalogue, nor a [[material]] of this file")
         .help("`ringsum list materials` names all; describe your own in a [[material]] table")
-        .nearest(name, known),
+        .meaning(&meant(name, &mine)),
     );
     None
+}
+
+/// A name of the catalogue for a bare number: its own record, or the one most likely meant.
+pub(super) fn likely(number: &str) -> Option<String> {
+    let known = catalog::material(number).map(|_| number);
+    known
+        .or_else(|| meant(number, &[]).first().copied())
+        .map(str::to_owned)
+}
+
+/// Materials that were probably meant by an unknown name: a family, those that hold the name, or
+/// the nearest. `own` are materials of the file.
+fn meant<'a>(name: &str, own: &[&'a str]) -> Vec<&'a str> {
+    if let Some(family) = catalog::family(name) {
+        return family.to_vec();
+    }
+    let mut found = catalog::unified(name);
+    if found.is_empty() && name.trim().chars().count() >= 3 {
+        found = catalog::holding(name);
+    }
+    if !found.is_empty() {
+        found.truncate(MOST_SUGGESTED);
+        return found;
+    }
+    // Another number is another alloy, not a slip.
+    let number = number(name);
+    let mut known = own.to_vec();
+    // A slip of `al` or `cu` may as well be another metal.
+    for word in catalog::family_words().filter(|word| word.len() > 3) {
+        known.push(word);
+    }
+    for other in catalog::names(catalog::Kind::Materials) {
+        if number.is_none() || self::number(other) == number {
+            known.push(other);
+        }
+    }
+    let Some(near) = diagnostic::nearest(name, known.into_iter()) else {
+        return Vec::new();
+    };
+    if let Some(mine) = own.iter().find(|mine| **mine == near) {
+        return vec![mine];
+    }
+    match (catalog::family(&near), catalog::material(&near)) {
+        (Some(family), _) => family.to_vec(),
+        (None, Some(material)) => vec![material.name.as_str()],
+        (None, None) => Vec::new(),
+    }
+}
+
+/// The first number of a name that has three digits or more: `6061` of `Al 6061-T6`.
+fn number(name: &str) -> Option<&str> {
+    name.split(|letter: char| !letter.is_ascii_digit())
+        .find(|digits| digits.len() >= 3)
 }
 
 /// A material that the file describes alone.

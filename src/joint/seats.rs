@@ -1,5 +1,7 @@
 //! Where heads, washers and nuts press, and the holes they stand over.
 
+mod parts;
+
 use crate::{
     catalog::{self, SeatRecord, Status, Thread},
     joint::{
@@ -13,8 +15,7 @@ use crate::{
     units::{self, Quantity},
 };
 
-/// Kinds of head.
-pub(super) const HEADS: [&str; 5] = ["hex", "socket", "pan", "button", "countersunk"];
+pub(super) use parts::{HEADS, Parts};
 
 /// A washer spreads the pressure of the head by this multiple of its thickness in diameter
 /// (a rule of the kind VDI 2230 uses, from memory).
@@ -46,6 +47,8 @@ pub(super) struct Bolt<'a> {
     pub engagement: Engagement,
     /// Plate on which the head sits.
     pub head_plate: usize,
+    /// Head and washers.
+    pub parts: Parts,
 }
 
 /// Reads the hole radius in each plate, m.
@@ -186,13 +189,22 @@ fn medium_hole(bolt: Bolt<'_>, collector: &mut Collector) -> Option<f64> {
 /// Reads the seats of head and nut over known holes.
 pub(super) fn read(bolt: Bolt<'_>, holes: [f64; 2], collector: &mut Collector) -> Option<Seats> {
     let record = bolt.record;
-    let head = head(bolt, collector);
+    let head = bolt.parts.head;
     let bearing = record.number("bearing");
     if record.has("bearing") && bearing.is_none() {
         return None;
     }
-    let head_washer = washer(bolt, "washer", collector)?;
-    let nut_washer = washer(bolt, "nut_washer", collector)?;
+    if let Some(head) = head
+        && head.status == Status::Judgement
+        && bearing.is_none()
+    {
+        collector.assume(
+            record.at("bearing"),
+            units::show(head.outer, Quantity::Length),
+            format!("{}: {}", head.standard, head.source),
+        );
+    }
+    let [head_washer, nut_washer] = bolt.parts.washers?;
     let near = holes[bolt.head_plate];
     let conical = head.is_some_and(|head| head.kind == "countersunk") && bearing.is_none();
     let (head_seat, friction_radius) = match (bearing, head) {
@@ -209,7 +221,7 @@ pub(super) fn read(bolt: Bolt<'_>, holes: [f64; 2], collector: &mut Collector) -
         (Engagement::Nut, None) => {
             let nut = catalog::seat("nut", &bolt.thread.name);
             if nut.is_none() {
-                collector.report(no_seat(bolt, "nut"));
+                collector.report(parts::no_seat(record, bolt.thread, "nut"));
             }
             Some(pressed(bolt, [Some(nut?), nut_washer], far, collector)?.0)
         }
@@ -224,88 +236,6 @@ pub(super) fn read(bolt: Bolt<'_>, holes: [f64; 2], collector: &mut Collector) -
         washer_thickness: thickness(head_washer).unwrap_or(0.0)
             + thickness(nut_washer).unwrap_or(0.0),
     })
-}
-
-fn head(bolt: Bolt<'_>, collector: &mut Collector) -> Option<&'static SeatRecord> {
-    let record = bolt.record;
-    let Some(name) = record.text("head") else {
-        if !record.has("head") && !record.has("bearing") {
-            collector.report(missing(record, "head", "head = \"socket\"").help(
-                "for example `head = \"socket\"`, or the seat itself: `bearing = \"8.5 mm\"`",
-            ));
-        }
-        return None;
-    };
-    let known = catalog::seats().iter().any(|seat| {
-        catalog::seat(name, &seat.thread).is_some_and(|found| HEADS.contains(&found.kind.as_str()))
-    });
-    if !known {
-        collector.report(
-            fault(
-                "name/unknown",
-                &record.span("head"),
-                format!("no head is called `{}`", short(name)),
-            )
-            .expecting(format!("expected {}", crate::joint::fields::listed(&HEADS)))
-            .nearest(name, HEADS.into_iter()),
-        );
-        return None;
-    }
-    let seat = catalog::seat(name, &bolt.thread.name);
-    if seat.is_none() && !record.has("bearing") {
-        collector.report(no_seat(bolt, name));
-    }
-    if let Some(seat) = seat
-        && seat.status == Status::Judgement
-        && !record.has("bearing")
-    {
-        collector.assume(
-            record.at("bearing"),
-            units::show(seat.outer, Quantity::Length),
-            format!("{}: {}", seat.standard, seat.source),
-        );
-    }
-    seat
-}
-
-/// A washer: the outer option is none when it is faulty, the inner one when there is none.
-#[expect(clippy::option_option, reason = "faulty and not stated are two things")]
-fn washer(
-    bolt: Bolt<'_>,
-    key: &str,
-    collector: &mut Collector,
-) -> Option<Option<&'static SeatRecord>> {
-    let record = bolt.record;
-    let Some(name) = record.text(key) else {
-        return (!record.has(key)).then_some(None);
-    };
-    if name.eq_ignore_ascii_case("none") {
-        return Some(None);
-    }
-    let found = catalog::seat(name, &bolt.thread.name).filter(|seat| seat.kind == "washer");
-    if found.is_none() {
-        let standards: Vec<&str> = catalog::seats()
-            .iter()
-            .filter(|seat| {
-                seat.kind == "washer"
-                    && catalog::seat("washer", &bolt.thread.name)
-                        .is_some_and(|fits| fits.thread == seat.thread)
-            })
-            .map(|seat| seat.standard.as_str())
-            .collect();
-        collector.report(
-            fault(
-                "name/unknown",
-                &record.span(key),
-                format!("no washer `{}` for {}", short(name), bolt.thread.name),
-            )
-            .expecting("expected the standard of a washer, or `none`")
-            .help(format!("known for this thread: {}", standards.join(", ")))
-            .nearest(name, standards.iter().copied()),
-        );
-        return None;
-    }
-    Some(found)
 }
 
 /// Seat on the plate and friction radius of a head or nut that may stand on a washer.
@@ -362,17 +292,4 @@ fn annulus(bolt: Bolt<'_>, [inner, outer]: [f64; 2], collector: &mut Collector) 
 
 fn mean_radius(seat: Seat) -> f64 {
     f64::midpoint(seat.inner_radius, seat.outer_radius)
-}
-
-fn no_seat(bolt: Bolt<'_>, part: &str) -> crate::diagnostic::Fault {
-    fault(
-        "fastener/no-seat",
-        &bolt.record.span("thread"),
-        format!(
-            "the catalogue has no `{part}` seat for {}",
-            bolt.thread.name
-        ),
-    )
-    .expecting("expected `bearing` for this thread")
-    .help("state the outer diameter of the seat: `bearing = \"8.5 mm\"`")
 }

@@ -51,8 +51,21 @@ const UNQUOTED: &str = "must be quoted";
 /// What TOML says of a key that stands twice.
 const DUPLICATE: &str = "duplicate key";
 
+/// Quotes that word processors put in place of straight ones.
+const QUOTES: [char; 10] = ['“', '”', '„', '‟', '‘', '’', '‚', '«', '»', '″'];
+
 fn worded(message: &str, span: &Span, text: &str) -> Fault {
     let found = text.get(span.clone()).unwrap_or_default();
+    let bare = found.trim_matches(QUOTES);
+    if message.contains(UNQUOTED) && !found.contains('\n') && bare != found {
+        return fault(
+            "file/syntax",
+            span,
+            format!("`{}` is in typographic quotes", short(found)),
+        )
+        .expecting(format!("expected `\"{}\"`", short(bare)))
+        .help("text stands in straight quotes, as plain text editors write them");
+    }
     if message.contains(UNQUOTED) && !found.contains('\n') {
         return fault(
             "file/syntax",

@@ -12,6 +12,7 @@ use crate::{
         collector::{Collector, Wording, fault},
         fields::{Field, Kind, Measure, Need, SPREAD_KEYS, Section, listed},
         record::{Entry, Record, Value},
+        sections::{FRICTION, REQUIRE, RISES},
         tree::{Form, Key, Node, Span, short},
     },
 };
@@ -36,6 +37,13 @@ struct Stated<'n> {
     path: &'n str,
 }
 
+impl<'n> Stated<'n> {
+    /// The key as the file states it, which for the shorthand of a table is that of the table.
+    fn key(&self) -> &'n str {
+        self.path.rsplit('.').next().unwrap_or(self.field.key)
+    }
+}
+
 impl Walk<'_> {
     fn record(&mut self, node: &Node, section: &'static Section, path: &str) -> Option<Record> {
         let Form::Table(entries) = &node.form else {
@@ -45,7 +53,7 @@ impl Walk<'_> {
         for (key, value) in entries {
             // A slip of the key is told, and its value read as what was meant: one fault, not two.
             let field = section.field(&key.name).or_else(|| {
-                self.unknown(key, section)
+                self.meant(key, value, section)
                     .filter(|meant| node.child(meant.key).is_none())
             });
             let Some(field) = field else { continue };
@@ -77,6 +85,12 @@ impl Walk<'_> {
         section: &'static Section,
         path: &str,
     ) -> Option<Record> {
+        if section.name == FRICTION.name
+            && let Some(told) = bare_friction(node)
+        {
+            self.collector.report(told);
+            return None;
+        }
         let field = section.shorthand.and_then(|key| section.field(key));
         let Some(field) = field else {
             let example = section.fields.first().map_or_else(String::new, Field::line);
@@ -137,6 +151,31 @@ impl Walk<'_> {
         }
     }
 
+    /// Tells of a key that the table does not have, and returns the field probably meant. A place
+    /// whose rise is limited is no key of its own.
+    fn meant(&mut self, key: &Key, value: &Node, section: &Section) -> Option<&'static Field> {
+        if section.name != REQUIRE.name || !RISES.contains(&key.name.as_str()) {
+            return self.unknown(key, section);
+        }
+        let limit = match &value.form {
+            Form::Text(text) => short(text),
+            _ => "5 K".into(),
+        };
+        self.collector.report(
+            fault(
+                "file/unknown-key",
+                &key.span,
+                format!("unknown key `{}`", key.name),
+            )
+            .expecting("not a key of this table")
+            .help(format!(
+                "write `{{ rise = \"{limit}\", of = \"{}\" }}`",
+                key.name
+            )),
+        );
+        REQUIRE.field("rise")
+    }
+
     /// Tells of an unknown key; returns the field of this table that was probably meant.
     fn unknown(&mut self, key: &Key, section: &Section) -> Option<&'static Field> {
         let told = fault(
@@ -166,12 +205,38 @@ impl Walk<'_> {
         self.collector.report(
             wrong_type(
                 stated.node,
-                &format!("`{}`", stated.field.key),
+                &format!("`{}`", stated.key()),
                 &stated.field.kind.expects(),
             )
             .help(format!("for example `{}`", stated.field.line())),
         );
     }
+}
+
+/// Coefficients that stand in place of the table they belong into.
+fn bare_friction(node: &Node) -> Option<Fault> {
+    let written = match &node.form {
+        Form::Number(text, _) => text.clone(),
+        Form::Text(text) if text.trim().parse::<f64>().is_ok() => text.trim().to_owned(),
+        Form::List(nodes) => {
+            let numbers: Option<Vec<&str>> = nodes
+                .iter()
+                .map(|node| match &node.form {
+                    Form::Number(text, _) => Some(text.as_str()),
+                    _ => None,
+                })
+                .collect();
+            format!("[{}]", numbers?.join(", "))
+        }
+        _ => return None,
+    };
+    let value = short(&written);
+    Some(
+        wrong_type(node, "`friction`", "a class, or coefficients by name").help(format!(
+            "write `friction = {{ thread = {value}, head = {value} }}`; a nut factor is \
+             `friction = {{ nut_factor = {value} }}`"
+        )),
+    )
 }
 
 /// A required key that a table does not state.

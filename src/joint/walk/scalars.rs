@@ -4,7 +4,8 @@ use crate::{
     joint::{
         Bounds,
         collector::{Wording, fault},
-        fields::{Measure, SPREAD_KEYS, listed},
+        fields::{Catalogue, Kind, Measure, SPREAD_KEYS, listed},
+        materials,
         record::{Spread, Width},
         tree::{Form, short},
         walk::{Stated, Walk, range, spread_key},
@@ -29,11 +30,15 @@ impl Walk<'_> {
                 None
             }
             Form::Number(text, _) => {
-                let help = format!(
-                    "put it in quotes: `{} = \"{}\"`",
-                    stated.field.key,
-                    short(text)
-                );
+                let key = stated.key();
+                let name = match stated.field.kind {
+                    Kind::Name(Catalogue::Material) => materials::likely(text),
+                    _ => None,
+                };
+                let help = match name {
+                    Some(name) => format!("name it in quotes: `{key} = \"{name}\"`"),
+                    None => format!("put it in quotes: `{key} = \"{}\"`", short(text)),
+                };
                 self.wrong_with(stated, help);
                 None
             }
@@ -301,7 +306,7 @@ impl Walk<'_> {
         self.collector.report(
             super::wrong_type(
                 stated.node,
-                &format!("`{}`", stated.field.key),
+                &format!("`{}`", stated.key()),
                 &stated.field.kind.expects(),
             )
             .help(help),

@@ -1,0 +1,115 @@
+//! Fillers of the catalogue with values of the user, and losses of force.
+
+use super::{FillerKind, near, plain, read};
+use ringsum::catalog;
+
+fn filler(lines: &str) -> FillerKind {
+    read(&format!("{}\n[filler]\n{lines}\n", plain()))
+        .filler
+        .expect("a filler is stated")
+        .kind
+}
+
+fn points(lines: &str) -> Vec<(f64, f64)> {
+    match filler(lines) {
+        FillerKind::Table { points } => points,
+        other => panic!("{lines}: {other:?}"),
+    }
+}
+
+#[test]
+fn a_filler_with_a_table_keeps_it_when_its_own_values_are_stated() {
+    let known = catalog::filler("indium foil").expect("it is in the catalogue");
+    for same in [
+        "name = \"indium foil\"",
+        "name = \"indium foil\"\nthickness = \"0.1 mm\"",
+        "name = \"indium foil\"\nconductivity = \"82 W/(m·K)\"",
+        "name = \"indium foil\"\nmodel = \"layer\"\nthickness = \"100 µm\"\nconductivity = \"82 W/(m·K)\"",
+        "name = \"indium foil\"\nbond_line = \"100 µm\"",
+    ] {
+        assert_eq!(points(same), known.points, "{same}");
+    }
+}
+
+#[test]
+fn only_the_bulk_part_of_a_table_follows_thickness_and_conductivity() {
+    // Indium: t/k = 100 µm / 82 W/(m K) = 0.0122 cm² K/W of 0.25, 0.07 and 0.04; the rest is contact.
+    let bulk = 100e-6 / 82.0;
+    let known = &catalog::filler("indium foil").expect("known").points;
+    let thick = points("name = \"indium foil\"\nthickness = \"0.2 mm\"");
+    let soft = points("name = \"indium foil\"\nconductivity = \"41 W/(m·K)\"");
+    for ((at, known), (found, soft)) in known.iter().zip(thick.iter().zip(&soft)) {
+        assert!(
+            near(found.0, *at) && near(found.1, known + bulk),
+            "{found:?}"
+        );
+        assert!(near(soft.1, known + bulk), "{soft:?}");
+    }
+    // Epoxy: the table lies below t/k, all of it is bulk and scales as one.
+    let known = &catalog::filler("epoxy bond").expect("known").points;
+    let twice = points("name = \"epoxy bond\"\nthickness = \"40 µm\"");
+    assert!(near(twice[0].1, 2.0 * known[0].1), "{twice:?}");
+}
+
+#[test]
+fn a_scaled_table_is_an_assumption() {
+    let text = plain() + "\n[filler]\nname = \"gap pad\"\nthickness = \"0.5 mm\"\n";
+    let joint = read(&text);
+    let of = |field: &str| {
+        let mut all = joint.assumptions.iter();
+        all.find(|assumption| assumption.field == field).cloned()
+    };
+    let table = of("filler.table").expect("the table is kept");
+    assert!(table.value.contains("× 0.5"), "{table:?}");
+    assert!(
+        of("filler.conductivity").is_some(),
+        "{:?}",
+        joint.assumptions
+    );
+    assert!(of("filler.boundary").is_none() && of("filler.thickness").is_none());
+}
+
+#[test]
+fn a_stated_boundary_or_table_replaces_that_of_the_catalogue() {
+    let layer =
+        filler("name = \"indium foil\"\nthickness = \"0.2 mm\"\nboundary = \"0.1 K·cm²/W\"");
+    assert!(
+        matches!(layer, FillerKind::Layer { boundary, thickness, .. } if near(boundary, 1e-5) && near(thickness, 2e-4)),
+        "{layer:?}"
+    );
+    let own = points("name = \"indium foil\"\ntable = [[\"0 Pa\", \"1 K·cm²/W\"]]");
+    assert_eq!(own.len(), 1);
+    let paste = filler("name = \"filled grease\"\nbond_line = \"50 µm\"");
+    assert!(matches!(paste, FillerKind::Layer { .. }), "{paste:?}");
+}
+
+#[test]
+fn guide_settling_is_left_to_the_preload() {
+    let losses = |lines: &str| {
+        let joint = read(&format!("{}\n[losses]\n{lines}\n", plain()));
+        joint.losses.expect("losses are stated")
+    };
+    assert_eq!(losses("settling = \"guide\"").settling, None);
+    assert_eq!(losses("relaxation = \"3 %\"").settling, None);
+    let stated = losses("settling = \"12 µm\"").settling;
+    assert!(stated.is_some_and(|settling| near(settling, 12e-6)));
+}
+
+#[test]
+fn losses_not_asked_for_are_an_assumption() {
+    let told = |text: &str| {
+        let joint = read(text);
+        let mut all = joint.assumptions.into_iter();
+        all.find(|assumption| assumption.field == "losses")
+    };
+    let assumed = told(&plain()).expect("no table of losses");
+    assert_eq!(
+        assumed.value,
+        "none at nominal; guide settling and 5 % relaxation in the low force"
+    );
+    assert_eq!(assumed.why, "not stated");
+    assert_eq!(
+        told(&(plain() + "\n[losses]\nsettling = \"guide\"\n")),
+        None
+    );
+}
