@@ -720,7 +720,7 @@ fn a_torque_curve_is_told_and_drawn_without_leaving_anything_behind() {
     let folder = starter();
     let sweep = |out: &[&str]| {
         let command = within(&folder).args(["torque", "joint.toml", "--steps", "3"]);
-        command.args(["--draws", "8"]).args(out).assert()
+        command.args(["--draws", "20"]).args(out).assert()
     };
     let told = sweep(&["--out", "curve.svg"]).code(0);
     assert!(stdout(&told).contains("N·m"));

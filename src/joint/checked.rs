@@ -274,6 +274,10 @@ pub struct Fastener {
     pub hole_radius: [f64; 2],
     /// Total thickness of washers in the grip, m.
     pub washer_thickness: f64,
+    /// Number of washers in the grip; each adds a contact that settles.
+    pub washers: u32,
+    /// Whether the head is a cylinder (socket head) rather than a hexagon.
+    pub cylindrical_head: bool,
     /// How the far end holds.
     pub engagement: Engagement,
     /// How the bolt is tightened.

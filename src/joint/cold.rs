@@ -81,7 +81,19 @@ fn cold_data(material: &Material, joint: &Joint, span: &Span, collector: &mut Co
     }
 }
 
+/// Above this neither materials nor gases are known, K.
+const DATA_END: f64 = 600.0;
+
+/// Whether temperature leaves the force alone: a plain service temperature moves nothing, so that
+/// contraction need not be known.
+fn stays(case: &Case) -> bool {
+    case.name == "service" && case.temperature <= DATA_END
+}
+
 fn contraction(material: &Material, joint: &Joint, case: &Case) -> Result<f64, ColdFault> {
+    if stays(case) {
+        return Ok(0.0);
+    }
     material.contraction_between(joint.service.assembly_temperature, case.temperature)
 }
 
@@ -89,6 +101,9 @@ fn bolt(fastener: &Fastener, joint: &Joint, case: &Case) -> Result<f64, ColdFaul
     let grade = &fastener.grade;
     if fastener.shank_path {
         grade.conductivity_at(case.temperature)?;
+    }
+    if stays(case) {
+        return Ok(0.0);
     }
     grade.contraction_between(joint.service.assembly_temperature, case.temperature)
 }

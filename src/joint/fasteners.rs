@@ -109,6 +109,8 @@ fn group(
             conical_seat: seated.seats.conical,
             hole_radius: seated.holes,
             washer_thickness: seated.seats.washer_thickness,
+            washers: seated.seats.washers,
+            cylindrical_head: seated.seats.cylindrical,
             engagement: seated.engagement,
             tightening: tightening?,
             head_plate: seated.head_plate,

@@ -34,6 +34,10 @@ pub(super) struct Seats {
     pub conical: bool,
     /// Washers in the grip, m.
     pub washer_thickness: f64,
+    /// How many.
+    pub washers: u32,
+    /// Whether the head is a cylinder rather than a hexagon.
+    pub cylindrical: bool,
 }
 
 /// What the seats depend on.
@@ -235,6 +239,8 @@ pub(super) fn read(bolt: Bolt<'_>, holes: [f64; 2], collector: &mut Collector) -
         conical,
         washer_thickness: thickness(head_washer).unwrap_or(0.0)
             + thickness(nut_washer).unwrap_or(0.0),
+        washers: u32::from(head_washer.is_some()) + u32::from(nut_washer.is_some()),
+        cylindrical: head.is_some_and(|head| head.kind != "hex"),
     })
 }
 

@@ -34,13 +34,11 @@ pub(super) fn read(record: &Record, collector: &mut Collector) -> Option<Tighten
             None
         }
         (false, true) => {
-            if record.has("friction") {
-                collector.assume(
-                    record.at("friction"),
-                    "not used",
-                    "the preload is stated, so no torque is turned into force",
-                );
-            }
+            collector.assume(
+                record.at("friction"),
+                "class B, 0.08 to 0.16",
+                "the preload is stated, so friction only tells the torsion in strength use",
+            );
             let preload = record.spread("preload")?;
             known_preload(record, preload, scatter?, collector)
         }

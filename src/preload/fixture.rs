@@ -70,6 +70,8 @@ pub fn m6() -> Fastener {
         conical_seat: false,
         hole_radius: [3.3e-3; 2],
         washer_thickness: 0.0,
+        washers: 0,
+        cylindrical_head: false,
         engagement: Engagement::Nut,
         tightening: Tightening::Torque(TorqueTightening {
             torque: 7.0,

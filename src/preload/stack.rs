@@ -93,7 +93,11 @@ pub fn stack(joint: &Joint, fastener: &Fastener) -> Stack {
                 youngs_modulus: fastener.grade.youngs_modulus,
                 shank: 0.0,
                 free_thread: grip,
-                head: HeadForm::Hexagon,
+                head: if fastener.cylindrical_head {
+                    HeadForm::Socket
+                } else {
+                    HeadForm::Hexagon
+                },
                 far,
             })
             .total(),
@@ -130,17 +134,16 @@ fn from_head(joint: &Joint, fastener: &Fastener) -> Vec<usize> {
 }
 
 fn contacts(fastener: &Fastener, clamped: usize) -> Contacts {
-    let washed = u32::from(fastener.washer_thickness > 0.0);
     let plates = clamped as u32;
     match fastener.engagement {
         // Between n clamped plates lie n − 1 interfaces, with a tapped plate behind them n.
         Engagement::Nut => Contacts {
             seats: 2,
-            interfaces: plates - 1 + 2 * washed,
+            interfaces: plates - 1 + fastener.washers,
         },
         Engagement::Tapped { .. } | Engagement::Insert { .. } => Contacts {
             seats: 1,
-            interfaces: plates + washed,
+            interfaces: plates + fastener.washers,
         },
     }
 }
@@ -262,6 +265,7 @@ mod tests {
         let bare = example_a();
         let mut washed = example_a();
         washed.fasteners[0].washer_thickness = 4e-3;
+        washed.fasteners[0].washers = 2;
         let [bare, washed] = [&bare, &washed].map(|joint| stack(joint, &joint.fasteners[0]));
         assert!((washed.grip - bare.grip - 4e-3).abs() < 1e-12);
         // 4 mm of steel ring over 73.1 mm²: 0.267e-9 m/N, three digits.
@@ -290,6 +294,7 @@ mod tests {
     fn only_the_difference_of_expansion_moves_the_force() {
         let mut joint = example_a();
         joint.fasteners[0].washer_thickness = 4e-3;
+        joint.fasteners[0].washers = 2;
         let found = stack(&joint, &joint.fasteners[0]);
         let equal = Strains {
             plates: &[1e-3, 1e-3],

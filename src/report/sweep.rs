@@ -112,7 +112,7 @@ fn advice(sweep: &TorqueSweep, best: Option<usize>, stated: Option<usize>) -> St
         format!(", {} below the stated torque", percent(gain))
     });
     format!(
-        "best     {} N·m: lowest source to sink of the torques that strength allows here{gain}\n",
+        "best     {} N·m: lowest source to sink that strength allows here{gain}\n",
         four(point.torque)
     )
 }

@@ -65,7 +65,7 @@ fn heading(estimate: &Estimate) -> String {
     let band = match estimate.draws {
         0 => "nominal only".to_owned(),
         draws => format!(
-            "resistance low and high: 5 % and 95 % of {draws} draws, seed {}",
+            "K/W low and high: 5 % and 95 % of {draws} draws, seed {}",
             estimate.seed
         ),
     };
@@ -114,13 +114,13 @@ fn bolts(case: &CaseResult) -> String {
     let right = Side::Right;
     let mut text = aligned(
         &[
-            ("clamp force, extremes\nof friction and tool", Side::Left),
-            ("\nlow", right),
+            ("clamp force\nper bolt", Side::Left),
+            ("\nleast", right),
             ("assembly kN\nnominal", right),
-            ("\nhigh", right),
-            ("\nlow", right),
+            ("\nmost", right),
+            ("\nleast", right),
             ("service kN\nnominal", right),
-            ("\nhigh", right),
+            ("\nmost", right),
             ("of yield\nnominal", right),
             ("\nhighest", right),
             ("torque N·m\nat most", right),

@@ -133,8 +133,8 @@ fn heat_beyond_the_data_is_not_told_as_cold() {
         assert!(!told.contains(word), "{told}");
     }
     assert!(told.contains("up to 450 K"), "{told}");
-    // The tightening may be the hot one.
-    let assembly = "temperature = { sink = \"20 °C\", assembly = \"600 °C\" }\n";
+    // The tightening may be the hot one; it matters where cases let the force follow temperature.
+    let assembly = "temperature = { hot = \"30 °C\", cold = \"20 °C\", assembly = \"600 °C\" }\n";
     let hot = plain().replace("\"vacuum\"\n", &format!("\"vacuum\"\n{assembly}"));
     assert!(codes(&hot).contains(&"material/above-range"));
 }

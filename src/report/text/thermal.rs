@@ -158,7 +158,7 @@ fn required(requirement: &RequirementResult, draws: u32) -> String {
             format!("UNCERTAIN: met at nominal, {value} {unit}; no low and high were drawn")
         }
         Met::Uncertain => {
-            format!("UNCERTAIN: {value} {unit} at the unfavourable end, met at nominal")
+            format!("UNCERTAIN: met at nominal, {value} {unit} at the unfavourable end")
         }
     };
     format!(
