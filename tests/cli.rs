@@ -738,7 +738,7 @@ fn a_torque_curve_is_told_and_drawn_without_leaving_anything_behind() {
     let folder = starter();
     let sweep = |out: &[&str]| {
         let command = within(&folder).args(["torque", "joint.toml", "--steps", "3"]);
-        command.args(["--draws", "8"]).args(out).assert()
+        command.args(["--draws", "20"]).args(out).assert()
     };
     let told = sweep(&["--out", "curve.svg"]).code(0);
     assert!(stdout(&told).contains("N·m"));
@@ -801,7 +801,12 @@ fn the_catalogue_is_listed_filtered_and_told_in_full() {
         "{some}"
     );
     let one = stdout(&ringsum().args(["list", "6061-t6"]).assert().code(0));
-    assert!(one.contains("source"), "{one}");
+    // Value, spread, status and source of the record that is left.
+    assert!(
+        one.contains("167 W/(m·K) (155 W/(m·K) to 180 W/(m·K))"),
+        "{one}"
+    );
+    assert!(one.contains("seen: material data sheet"), "{one}");
     let object = json(
         &ringsum()
             .args(["list", "gases", "helium", "--json"])
