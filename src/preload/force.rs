@@ -348,6 +348,8 @@ mod tests {
     }
 
     proptest! {
+        #![proptest_config(crate::fixed_cases(256))]
+
         #[test]
         fn more_friction_clamps_less(a in -1.0..1.0f64, b in -1.0..1.0f64, torque in 0.5..20.0f64) {
             let bolt = m6_with(|tightening| tightening.torque = torque);
