@@ -1,4 +1,4 @@
-//! Arguments, files, progress and exit codes: the only input and output.
+//! Arguments, files and exit codes: the only input and output.
 
 mod chain;
 mod check;

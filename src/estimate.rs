@@ -140,7 +140,7 @@ pub fn nominal(chain: &Chain, options: &Options) -> Result<Estimate, Failure> {
         source_plane,
         sink_plane,
         heat: joint.service.heat,
-        cautions: cautions::gathered(chain, &cases),
+        cautions: cautions::gathered(chain, &cases)?,
         cases,
         assumptions: assumptions(joint),
     })

@@ -46,7 +46,7 @@ pub use finishes::slope_from_roughness;
 pub use schema::schema;
 
 /// Longest joint file, bytes.
-pub const LONGEST_FILE: usize = 10_000_000;
+pub const LONGEST_FILE: usize = 1_000_000;
 
 /// Most bolts of a joint, and most entries of any list.
 pub const MOST_PLACES: usize = 10_000;

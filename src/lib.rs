@@ -29,3 +29,14 @@ pub mod report;
 pub mod figures;
 
 pub mod cli;
+
+/// Configuration of property tests: so many cases, the same in every run.
+#[cfg(test)]
+fn fixed_cases(cases: u32) -> proptest::test_runner::Config {
+    proptest::test_runner::Config {
+        cases,
+        rng_seed: proptest::test_runner::RngSeed::Fixed(1),
+        failure_persistence: None,
+        ..proptest::test_runner::Config::default()
+    }
+}

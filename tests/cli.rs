@@ -181,9 +181,9 @@ fn a_folder_an_empty_file_and_foreign_bytes_are_faults_of_the_file() {
 }
 
 #[test]
-fn a_file_beyond_ten_megabytes_is_not_read() {
+fn a_file_beyond_one_megabyte_is_not_read() {
     let folder = tempdir().unwrap();
-    fs::write(folder.path().join("huge.toml"), vec![b'#'; 10_000_001]).unwrap();
+    fs::write(folder.path().join("huge.toml"), vec![b'#'; 1_000_001]).unwrap();
     let told = stderr(
         &within(&folder)
             .args(["check", "huge.toml"])
@@ -191,6 +191,7 @@ fn a_file_beyond_ten_megabytes_is_not_read() {
             .code(2),
     );
     assert!(told.contains("file/too-large"), "{told}");
+    assert!(told.contains("1 MB"), "{told}");
 }
 
 #[test]
@@ -625,6 +626,23 @@ fn an_override_changes_the_joint_and_a_wrong_one_is_pointed_at() {
 }
 
 #[test]
+fn an_override_is_checked_without_computing() {
+    let folder = starter();
+    let told = |set: &str| {
+        let command = within(&folder).args(["check", "joint.toml", "--set", set]);
+        command.assert()
+    };
+    let good = stdout(&told("plate.box.thickness=\"9 mm\"").code(0));
+    assert!(good.contains("ok"), "{good}");
+    let wrong = told("plate.box.thickness=\"9\"").code(2).stdout_eq("");
+    assert!(
+        stderr(&wrong).contains("unit/bare-number"),
+        "{}",
+        stderr(&wrong)
+    );
+}
+
+#[test]
 fn a_batch_tells_every_file_and_fails_as_a_whole() {
     let folder = starter();
     let files = ["joint.toml", "absent.toml", "joint.toml"];
@@ -783,7 +801,12 @@ fn the_catalogue_is_listed_filtered_and_told_in_full() {
         "{some}"
     );
     let one = stdout(&ringsum().args(["list", "6061-t6"]).assert().code(0));
-    assert!(one.contains("source"), "{one}");
+    // Value, spread, status and source of the record that is left.
+    assert!(
+        one.contains("167 W/(m·K) (155 W/(m·K) to 180 W/(m·K))"),
+        "{one}"
+    );
+    assert!(one.contains("seen: material data sheet"), "{one}");
     let object = json(
         &ringsum()
             .args(["list", "gases", "helium", "--json"])

@@ -8,7 +8,7 @@ use ringsum::{
     },
     joint::{Limit, Plane, RequirementKind},
     report::{
-        json, sweep,
+        catalogue, json, sweep,
         text::{self, Detail, WIDTH},
     },
 };
@@ -555,4 +555,52 @@ fn rings_are_shown_in_millimetres_and_kept_in_metres() {
         json::rings(&[vec![ring]])[0][0]["inner_radius"],
         json!(0.00225)
     );
+}
+
+/// Status and source of a record or of a value.
+fn has_origin(part: &Value) -> bool {
+    let status = part["status"].as_str().unwrap_or_default();
+    let source = part["source"].as_str().unwrap_or_default();
+    ["seen", "memory", "computed", "judgement"].contains(&status) && !source.is_empty()
+}
+
+#[test]
+fn every_value_of_the_catalogue_has_status_and_source() {
+    let listings = catalogue::listings();
+    assert_eq!(listings.len(), 11);
+    for listing in listings {
+        let kind = listing.kind;
+        assert!(!listing.items.is_empty(), "{kind}");
+        for item in &listing.items {
+            assert_eq!(item.cells.len(), listing.headings.len(), "{kind}");
+            let record = item.record.as_object().expect("a record is an object");
+            let values: Vec<&Value> = record
+                .values()
+                .filter(|part| part.get("value").is_some())
+                .collect();
+            // A record speaks for its bare values; else each value speaks for itself.
+            let told = has_origin(&item.record) || !values.is_empty();
+            assert!(
+                told && values.iter().all(|part| has_origin(part)),
+                "{kind} {record:?}"
+            );
+        }
+    }
+}
+
+#[test]
+fn a_record_answers_to_its_names() {
+    for listing in catalogue::listings() {
+        for item in &listing.items {
+            let record = &item.record;
+            let aliases = record["aliases"].as_array().into_iter().flatten();
+            for name in record["name"]
+                .as_str()
+                .into_iter()
+                .chain(aliases.filter_map(Value::as_str))
+            {
+                assert!(item.answers(&[name.to_owned()]), "{}: {name}", listing.kind);
+            }
+        }
+    }
 }

@@ -6,7 +6,7 @@ use serde::Deserialize;
 
 use crate::catalog::{
     names::Shelf,
-    raw::{CatalogFault, RawDatum, RawStatus, Sources, Values, embedded, parse},
+    raw::{CatalogFault, RawDatum, RawOrigin, RawStatus, Sources, Values, embedded, parse},
     records::Gas,
 };
 
@@ -45,9 +45,7 @@ struct RawGas {
     mean_free_path: Vec<f64>,
     prandtl: Vec<f64>,
     heat_ratio: Vec<f64>,
-    // Read so that a record without it is refused; every table is computed, see `source`.
-    #[serde(rename = "status")]
-    _status: RawStatus,
+    status: RawStatus,
     source: String,
     accommodation: RawDatum,
 }
@@ -85,6 +83,11 @@ fn checked(raw: &RawGas, sources: &Sources) -> Result<Gas, CatalogFault> {
         let what = "temperatures must rise and every column have as many rows";
         return Err(CatalogFault::new(&raw.name, what));
     }
+    let origin = sources.origin(&RawOrigin {
+        status: raw.status,
+        source: raw.source.clone(),
+        of: None,
+    })?;
     Ok(Gas {
         name: raw.name.clone(),
         temperatures: values.positive(&raw.temperatures, 1.0)?,
@@ -93,6 +96,7 @@ fn checked(raw: &RawGas, sources: &Sources) -> Result<Gas, CatalogFault> {
         prandtl: values.positive(&raw.prandtl, 1.0)?,
         heat_ratio: values.positive(&raw.heat_ratio, 1.0)?,
         accommodation: values.datum(&raw.accommodation, 1.0)?,
-        source: sources.name(&raw.source, None)?,
+        status: origin.status,
+        source: origin.source,
     })
 }

@@ -191,6 +191,8 @@ pub struct ClearanceHole {
     pub thread: String,
     /// Fine, medium and coarse diameter, m.
     pub diameters: [f64; 3],
+    /// How far it may be trusted.
+    pub status: Status,
     /// Source.
     pub source: String,
 }
@@ -244,6 +246,8 @@ pub struct Gas {
     pub heat_ratio: Vec<f64>,
     /// Thermal accommodation at engineering metal walls, 1.
     pub accommodation: Datum,
+    /// How far the tables may be trusted.
+    pub status: Status,
     /// Source of the tables.
     pub source: String,
 }

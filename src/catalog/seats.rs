@@ -234,6 +234,7 @@ pub(super) fn read_holes(text: &str) -> Result<Vec<ClearanceHole>, CatalogFault>
                 standard: group.standard.clone(),
                 thread: raw.thread.clone(),
                 diameters: raw.diameters_mm.map(|diameter| diameter * 1e-3),
+                status: origin.status,
                 source: origin.source,
             });
         }

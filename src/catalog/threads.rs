@@ -6,7 +6,7 @@ use serde::Deserialize;
 
 use crate::catalog::{
     raw::{CatalogFault, Origin, RawOrigin, RawStatus, Sources, embedded, parse},
-    records::Thread,
+    records::{Status, Thread},
 };
 
 /// 1 in in m.
@@ -35,12 +35,11 @@ pub(super) fn size(thread: &Thread) -> &str {
     &name[..end.unwrap_or(name.len())]
 }
 
-/// Series and origin of each thread, in the order of [`threads`].
-pub(super) fn origins() -> impl Iterator<Item = (&'static str, &'static Origin)> {
-    rack()
-        .origins
-        .iter()
-        .map(|(series, origin)| (series.as_str(), origin))
+/// Series of a thread, and status and source of its diameter and pitch.
+pub fn thread_origin(name: &str) -> Option<(&'static str, Status, &'static str)> {
+    let rack = rack();
+    let (series, origin) = &rack.origins[*rack.index.get(&key(name))?];
+    Some((series, origin.status, &origin.source))
 }
 
 /// A designation as people write it, brought to the one form under which threads are entered.

@@ -1,16 +1,11 @@
 //! The one place where commands meet the chain: reading a joint, estimating it, drawing it.
 
 use crate::{
-    catalog::{self, Kind},
     cli::console::Trouble,
     diagnostic,
     estimate::{self, Estimate, Failure, FieldMap, Options, RingRow, TorqueSweep},
     figures::{self, Drawing, Format},
     joint::Joint,
-    report::{
-        catalogue,
-        listing::{self, Listing},
-    },
     uncertainty::{self, SweepOptions},
     units::{self, Quantity},
 };
@@ -61,41 +56,6 @@ pub fn torque(text: &str) -> Result<f64, String> {
 /// The name that was probably meant.
 pub fn nearest(name: &str, known: &[String]) -> Option<String> {
     diagnostic::nearest(name, known.iter().map(String::as_str))
-}
-
-/// The whole catalogue, in the order of the chain.
-pub fn listings() -> Vec<Listing> {
-    vec![
-        catalogue::materials(catalog::materials()),
-        catalogue::finishes(catalog::finishes()),
-        catalogue::platings(catalog::platings()),
-        catalogue::threads(catalog::threads()),
-        catalogue::holes(catalog::clearance_holes()),
-        catalogue::heads(catalog::seats()),
-        catalogue::grades(catalog::grades()),
-        catalogue::friction(catalog::friction()),
-        catalogue::methods(catalog::methods()),
-        catalogue::gases(catalog::gases()),
-        catalogue::fillers(catalog::fillers()),
-    ]
-}
-
-/// Everything known about one record, where its kind has records of one name each.
-pub fn card((kind, name): (&str, &str)) -> Option<String> {
-    let kind = match kind {
-        "materials" => Kind::Materials,
-        "finishes" => Kind::Finishes,
-        "platings" => Kind::Platings,
-        "threads" => Kind::Threads,
-        "friction" => Kind::Friction,
-        "methods" => Kind::Tightening,
-        "gases" => Kind::Gases,
-        "fillers" => Kind::Fillers,
-        _ => return None,
-    };
-    let table = catalog::table(kind);
-    let row = table.rows.iter().find(|row| row[0] == name)?;
-    Some(listing::card(&table.columns, row))
 }
 
 /// A drawing as a file of the format.

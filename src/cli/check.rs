@@ -21,6 +21,9 @@ pub struct Check {
     /// Joint files; - reads standard input
     #[arg(required = true, value_name = "FILE")]
     files: Vec<PathBuf>,
+    /// Override a field: --set 'plate.box.thickness="6 mm"'
+    #[arg(long = "set", value_name = "KEY=VALUE")]
+    sets: Vec<String>,
     /// Print one JSON object per file
     #[arg(long)]
     json: bool,
@@ -33,7 +36,7 @@ impl Check {
         let layout = Layout::of_batch(self.files.len());
         let mut outcomes = Vec::new();
         for path in &self.files {
-            outcomes.push(match read(path, &[], console) {
+            outcomes.push(match read(path, &self.sets, console) {
                 Ok((source, _)) if self.json => {
                     console.json(&listing::accepted(&source.name), layout)?;
                     Outcome::Done

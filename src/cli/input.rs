@@ -3,6 +3,7 @@
 use crate::{
     cli::{chain, console::Trouble},
     diagnostic::Fault,
+    joint::LONGEST_FILE,
     report::number::plain,
 };
 use std::{
@@ -11,8 +12,8 @@ use std::{
     path::{Path, PathBuf},
 };
 
-/// Largest joint file, bytes. A joint is a page of text; anything larger is a mistake.
-const LARGEST: u64 = 10_000_000;
+/// Largest joint file, bytes: no more is read than the reader takes.
+const LARGEST: u64 = LONGEST_FILE as u64;
 
 /// A joint file as read.
 #[derive(Debug)]
@@ -69,7 +70,10 @@ pub fn read(path: &Path) -> Result<Source, Fault> {
     if bytes.len() as u64 > LARGEST {
         return Err(fault(
             "file/too-large",
-            format!("`{name}` is larger than 10 MB; a joint file is a page of text"),
+            format!(
+                "`{name}` is larger than {} MB; a joint file is a page of text",
+                LARGEST / 1_000_000
+            ),
             None,
         ));
     }

@@ -6,7 +6,9 @@ use crate::{
         console::{Console, Layout, Outcome, Trouble},
     },
     report::{
-        listing::{self, Listing, folded},
+        card::card,
+        catalogue,
+        listing::{self, Item, Listing, folded},
         table::{Side, aligned},
     },
 };
@@ -27,7 +29,7 @@ pub struct List {
 impl List {
     /// Lists the kinds, one kind, or whatever answers to the words.
     pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
-        let all = chain::listings();
+        let all = catalogue::listings();
         let Some(first) = self.kind.filter(|word| !word.trim().is_empty()) else {
             if self.json {
                 console.json(&listing::json(&all), Layout::Indented)?;
@@ -66,7 +68,7 @@ impl List {
         if self.json {
             console.json(&listing::json(&chosen), Layout::Indented)?;
         } else {
-            let told = single(&chosen).and_then(chain::card).unwrap_or_else(|| {
+            let told = single(&chosen).map(card).unwrap_or_else(|| {
                 let tables: Vec<String> = chosen.iter().map(listing::text).collect();
                 tables.join("\n")
             });
@@ -76,10 +78,10 @@ impl List {
     }
 }
 
-/// The one record that is left, with its kind.
-fn single(chosen: &[Listing]) -> Option<(&'static str, &str)> {
+/// The one record that is left.
+fn single(chosen: &[Listing]) -> Option<&Item> {
     match chosen {
-        [only] if only.items.len() == 1 => Some((only.kind, only.items[0].cells.first()?)),
+        [Listing { items, .. }] if items.len() == 1 => items.first(),
         _ => None,
     }
 }

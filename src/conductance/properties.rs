@@ -133,6 +133,8 @@ fn climbs(local: &Local) -> Result<(), TestCaseError> {
 }
 
 proptest! {
+    #![proptest_config(crate::fixed_cases(256))]
+
     #[test]
     fn load_never_lowers_the_conductance(interface in interface()) {
         climbs(&interface.prepare())?;

@@ -184,6 +184,8 @@ error[unit/not-a-quantity]: `6 N` is a force, and a length is expected
     }
 
     proptest! {
+        #![proptest_config(crate::fixed_cases(256))]
+
         #[test]
         fn any_span_on_any_text_is_shown(text in "(?s).{0,60}", start in 0_usize..90, length in 0_usize..90) {
             let shown = shown(&fault(start..start + length), "a", &text, Colour::Plain);

@@ -135,7 +135,7 @@ fn sweep(stated: f64, largest: f64, required: f64, size: f64) -> TorqueSweep {
 }
 
 proptest! {
-    #![proptest_config(ProptestConfig::with_cases(48))]
+    #![proptest_config(crate::fixed_cases(48))]
 
     #[test]
     fn texts_of_plans_are_clear(
@@ -201,7 +201,7 @@ fn wild() -> impl Strategy<Value = f64> {
 }
 
 proptest! {
-    #![proptest_config(ProptestConfig::with_cases(24))]
+    #![proptest_config(crate::fixed_cases(24))]
 
     #[test]
     fn no_numbers_make_a_figure_panic(

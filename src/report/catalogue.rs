@@ -9,10 +9,27 @@ pub use media::{fillers, gases, platings};
 pub use plates::{finishes, materials};
 
 use crate::{
-    catalog::{Datum, Status},
-    report::{number::brief, table::Side},
+    catalog::{self, Datum, Status},
+    report::{listing::Listing, number::brief, table::Side},
 };
 use serde_json::{Value, json};
+
+/// The whole catalogue, in the order of the chain.
+pub fn listings() -> Vec<Listing> {
+    vec![
+        materials(catalog::materials()),
+        finishes(catalog::finishes()),
+        platings(catalog::platings()),
+        threads(catalog::threads()),
+        holes(catalog::clearance_holes()),
+        heads(catalog::seats()),
+        grades(catalog::grades()),
+        friction(catalog::friction()),
+        methods(catalog::methods()),
+        gases(catalog::gases()),
+        fillers(catalog::fillers()),
+    ]
+}
 
 /// A heading of words.
 fn words(heading: &'static str) -> (&'static str, Side) {
@@ -56,7 +73,7 @@ fn datum_if(value: Option<&Datum>) -> Value {
 fn status(status: Status) -> &'static str {
     match status {
         Status::Seen => "seen",
-        Status::Memory => "from memory",
+        Status::Memory => "memory",
         Status::Computed => "computed",
         Status::Judgement => "judgement",
         Status::User => "user",

@@ -4,9 +4,8 @@ use crate::{
     joint::Faults,
     report::{
         json::FORMAT,
-        number::{plain, wrapped},
+        number::plain,
         table::{Side, aligned},
-        text::WIDTH,
     },
 };
 use serde_json::{Value, json};
@@ -75,27 +74,6 @@ pub fn text(listing: &Listing) -> String {
 fn lines(cell: &str) -> String {
     let lines: Vec<String> = cell.lines().map(plain).collect();
     lines.join("\n")
-}
-
-/// One record with everything known about it, a line to each heading that has a value.
-pub fn card(headings: &[&str], row: &[String]) -> String {
-    let label = headings
-        .iter()
-        .map(|each| each.chars().count())
-        .max()
-        .unwrap_or(0)
-        + 2;
-    let mut text = String::new();
-    for (heading, value) in headings.iter().zip(row) {
-        if value.is_empty() || value == "–" {
-            continue;
-        }
-        let gap = " ".repeat(label - heading.chars().count());
-        let body = wrapped(&plain(value), WIDTH - label, 0)
-            .replace('\n', &format!("\n{}", " ".repeat(label)));
-        text.extend([heading, gap.as_str(), body.as_str(), "\n"]);
-    }
-    text
 }
 
 /// The listings as one JSON object, records by kind.

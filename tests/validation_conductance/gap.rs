@@ -56,6 +56,7 @@ fn gas_at_300_kelvin(name: &str, accommodation: f64) -> Gas {
             status: Status::Seen,
             source: "tests/data/contact_gases.toml".into(),
         },
+        status: Status::Computed,
         source: "tests/data/contact_gases.toml".into(),
     }
 }

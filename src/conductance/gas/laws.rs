@@ -223,6 +223,8 @@ mod tests {
     }
 
     proptest::proptest! {
+        #![proptest_config(crate::fixed_cases(256))]
+
         #[test]
         fn closing_the_gap_raises_the_conductance(
             y in 0.3..6.0f64,

@@ -2,7 +2,7 @@
 
 use crate::diagnostic::registry::{
     Entry,
-    Gravity::{Grave, Note, Range},
+    Gravity::{Grave, Range},
 };
 
 pub(super) const ENTRIES: &[Entry] = &[
@@ -80,16 +80,6 @@ pub(super) const ENTRIES: &[Entry] = &[
             "The fitted cone was made for equal seats on both sides. Unequal ones are replaced by \
              one seat between them; the contact lies nearer to the smaller one.",
             "Equal washers on both sides remove the doubt.",
-        ],
-    ),
-    Note.entry(
-        "pressure/cell",
-        "Each bolt owns a cell of the plates",
-        [
-            "Every point of the faying faces belongs to its nearest bolt. A bolt's pressure is that \
-             of a round plate of its own, cut at the border of the cell.",
-            "Good while contacts stay apart. For rows so close that contacts meet, see \
-             `pressure/overlap`.",
         ],
     ),
     Range.entry(

@@ -94,9 +94,9 @@ pub(super) const ENTRIES: &[Entry] = &[
         "resistance/edge-sink",
         "Heat leaves at an edge",
         [
-            "With a sink at the rim all heat crosses the joint near that side and the plate's own \
-             length is part of the path. Two-dimensional plate models err by 4 to 5 % in vacuum \
-             there, and far bolts carry little.",
+            "With the sink at the rim the plate's own length is part of the path, the bolts near the \
+             rim carry most and far bolts little. A plate taken as a sheet errs by 4 to 5 % in \
+             vacuum there.",
             "Move bolts towards the cooled edge; compare with a mesh when the margin is thin.",
         ],
     ),

@@ -3,7 +3,7 @@
 use crate::{
     catalog::{self, MaterialKind},
     diagnostic::Caution,
-    estimate::{CaseResult, Chain, Realisation, cautions::caution, surfaces},
+    estimate::{CaseResult, State, cautions::caution, surfaces},
     joint::{Joint, Plate},
 };
 
@@ -16,13 +16,13 @@ const DATA_TO: f64 = 400.0;
 /// Handbook conductivity serves down to here where no fit is known, K.
 const DATA_FROM: f64 = 250.0;
 
-pub(super) fn conductance_cautions(chain: &Chain, cases: &[CaseResult]) -> Vec<Caution> {
-    let joint = chain.joint();
-    let mut found = Vec::new();
-    if let Ok(state) = chain.state(0, &Realisation::default()) {
-        let peak = cases.first().map_or(0.0, |case| case.pressure.peak);
-        found.extend(state.conditions.faces.local.cautions(peak));
-    }
+pub(super) fn conductance_cautions(
+    joint: &Joint,
+    state: &State,
+    cases: &[CaseResult],
+) -> Vec<Caution> {
+    let peak = cases.first().map_or(0.0, |case| case.pressure.peak);
+    let mut found = state.conditions.faces.local.cautions(peak);
     if !surfaces::bridged(joint) {
         let by_rule: Vec<&Plate> = joint
             .plates

@@ -106,7 +106,7 @@ fn leaving_the_checked_range_is_a_caution_with_its_numbers() {
 }
 
 proptest! {
-    #![proptest_config(ProptestConfig::with_cases(40))]
+    #![proptest_config(crate::fixed_cases(40))]
 
     #[test]
     fn field_carries_the_force(

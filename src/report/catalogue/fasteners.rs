@@ -1,7 +1,7 @@
 //! Threads, grades, heads, holes, friction, tightening methods.
 
 use crate::{
-    catalog::{ClearanceHole, FrictionRecord, Grade, MethodRecord, SeatRecord, Thread},
+    catalog::{self, ClearanceHole, FrictionRecord, Grade, MethodRecord, SeatRecord, Thread},
     report::{
         catalogue::{brief_if, datum, datum_if, numbers, shown, shown_if, starred, status, words},
         listing::{Item, Listing},
@@ -21,35 +21,43 @@ pub fn threads(records: &[Thread]) -> Listing {
             numbers("pitch diameter\nmm"),
             numbers("stress area\nmm²"),
         ],
-        items: records
-            .iter()
-            .map(|record| Item {
-                cells: vec![
-                    record.name.clone(),
-                    brief(record.diameter * 1e3),
-                    brief(record.pitch * 1e3),
-                    brief(record.pitch_diameter * 1e3),
-                    brief(record.stress_area * 1e6),
-                ],
-                keywords: if record.inch {
-                    "inch unified"
-                } else {
-                    "metric ISO"
-                }
-                .to_owned(),
-                record: json!({
-                    "name": record.name,
-                    "inch": record.inch,
-                    "diameter": record.diameter,
-                    "pitch": record.pitch,
-                    "pitch_diameter": record.pitch_diameter,
-                    "minor_diameter": record.minor_diameter,
-                    "nut_minor_diameter": record.nut_minor_diameter,
-                    "stress_diameter": record.stress_diameter,
-                    "stress_area": record.stress_area,
-                }),
-            })
-            .collect(),
+        items: records.iter().map(thread).collect(),
+    }
+}
+
+fn thread(record: &Thread) -> Item {
+    let origin = catalog::thread_origin(&record.name);
+    Item {
+        cells: vec![
+            record.name.clone(),
+            brief(record.diameter * 1e3),
+            brief(record.pitch * 1e3),
+            brief(record.pitch_diameter * 1e3),
+            brief(record.stress_area * 1e6),
+        ],
+        keywords: format!(
+            "{}|{}",
+            if record.inch {
+                "inch unified"
+            } else {
+                "metric ISO"
+            },
+            origin.map_or("", |(series, _, _)| series)
+        ),
+        record: json!({
+            "name": record.name,
+            "series": origin.map(|(series, _, _)| series),
+            "inch": record.inch,
+            "diameter": record.diameter,
+            "pitch": record.pitch,
+            "pitch_diameter": record.pitch_diameter,
+            "minor_diameter": record.minor_diameter,
+            "nut_minor_diameter": record.nut_minor_diameter,
+            "stress_diameter": record.stress_diameter,
+            "stress_area": record.stress_area,
+            "status": origin.map(|(_, of, _)| status(of)),
+            "source": origin.map(|(_, _, source)| source),
+        }),
     }
 }
 
@@ -147,7 +155,11 @@ pub fn holes(records: &[ClearanceHole]) -> Listing {
             .iter()
             .map(|record| {
                 let mut cells = vec![record.thread.clone(), record.standard.clone()];
-                cells.extend(record.diameters.map(|diameter| brief(diameter * 1e3)));
+                cells.extend(
+                    record
+                        .diameters
+                        .map(|diameter| starred(diameter * 1e3, record.status)),
+                );
                 Item {
                     cells,
                     keywords: String::new(),
@@ -157,6 +169,7 @@ pub fn holes(records: &[ClearanceHole]) -> Listing {
                         "fine": record.diameters[0],
                         "medium": record.diameters[1],
                         "coarse": record.diameters[2],
+                        "status": status(record.status),
                         "source": record.source,
                     }),
                 }

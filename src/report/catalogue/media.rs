@@ -56,6 +56,7 @@ fn gas(record: &Gas) -> Item {
             "prandtl": record.prandtl,
             "heat_ratio": record.heat_ratio,
             "accommodation": datum(&record.accommodation),
+            "status": status(record.status),
             "source": record.source,
         }),
     }
