@@ -5,12 +5,10 @@
 
 #![allow(clippy::print_stdout, reason = "a bench shows its times")]
 
-use std::{
-    hint::black_box,
-    io::Write,
-    process::{Command, Stdio},
-    time::Instant,
-};
+#[path = "peer/answer.rs"]
+mod answer;
+
+use std::{hint::black_box, time::Instant};
 
 use ringsum::pressure::round::{Faces, Head, Problem, Solution, solve};
 use serde_json::json;
@@ -109,30 +107,7 @@ fn shown(name: &str, problem: &Problem) -> (f64, Vec<f64>) {
 
 /// Contact radius and sorted seconds of the peer.
 fn peer(python: &str, job: &serde_json::Value) -> (f64, Vec<f64>) {
-    let mut child = Command::new(python)
-        .arg("benches/peer/round_contact.py")
-        .env("OMP_NUM_THREADS", "1")
-        .env("OPENBLAS_NUM_THREADS", "1")
-        .stdin(Stdio::piped())
-        .stdout(Stdio::piped())
-        .spawn()
-        .expect("the peer starts");
-    child
-        .stdin
-        .take()
-        .expect("standard input is piped")
-        .write_all(job.to_string().as_bytes())
-        .expect("the peer reads");
-    let output = child.wait_with_output().expect("the peer ends");
-    assert!(output.status.success(), "the peer failed");
-    let found: serde_json::Value = serde_json::from_slice(&output.stdout).expect("JSON");
-    let mut seconds: Vec<f64> = found["seconds"]
-        .as_array()
-        .expect("a list")
-        .iter()
-        .map(|value| value.as_f64().expect("a number"))
-        .collect();
-    seconds.sort_by(f64::total_cmp);
+    let found = answer::answer(python, "round_contact.py", job);
     let radius = found["contact_radius"].as_f64().expect("a number");
-    (radius, seconds)
+    (radius, answer::seconds(&found))
 }

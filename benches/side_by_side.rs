@@ -8,12 +8,10 @@
     reason = "a bench tells its times on standard output"
 )]
 
-use std::{
-    hint::black_box,
-    io::Write,
-    process::{Command, Stdio},
-    time::Instant,
-};
+#[path = "peer/answer.rs"]
+mod answer;
+
+use std::{hint::black_box, time::Instant};
 
 use rayon::prelude::*;
 use ringsum::{
@@ -171,31 +169,9 @@ fn timed(run: impl Fn() -> Vec<f64>) -> (Vec<f64>, f64) {
 
 /// First and last sum of the peer, and its median time.
 fn peer(python: &str, job: &serde_json::Value) -> (f64, f64, f64) {
-    let mut child = Command::new(python)
-        .arg("benches/peer/ring_sum.py")
-        .env("OMP_NUM_THREADS", "1")
-        .env("OPENBLAS_NUM_THREADS", "1")
-        .stdin(Stdio::piped())
-        .stdout(Stdio::piped())
-        .spawn()
-        .expect("the peer starts");
-    child
-        .stdin
-        .take()
-        .expect("standard input is piped")
-        .write_all(job.to_string().as_bytes())
-        .expect("the peer reads");
-    let output = child.wait_with_output().expect("the peer ends");
-    assert!(output.status.success(), "the peer failed");
-    let found: serde_json::Value = serde_json::from_slice(&output.stdout).expect("JSON");
+    let found = answer::answer(python, "ring_sum.py", job);
     let number = |value: &serde_json::Value| value.as_f64().expect("a number");
-    let mut seconds: Vec<f64> = found["seconds"]
-        .as_array()
-        .expect("a list")
-        .iter()
-        .map(number)
-        .collect();
-    seconds.sort_by(f64::total_cmp);
+    let seconds = answer::seconds(&found);
     (
         number(&found["first"]),
         number(&found["last"]),

@@ -24,7 +24,8 @@ pub struct Fault {
     pub help: Option<String>,
 }
 
-/// A result outside the range its law was checked in, or a duty of care. The result stands.
+/// A result outside the range its law was checked in, something to know when it is used, or a duty
+/// of care. The result stands.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Caution {
     /// Stable code, listed by `explain`: `preload/over-yield`.

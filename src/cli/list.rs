@@ -68,10 +68,12 @@ impl List {
         if self.json {
             console.json(&listing::json(&chosen), Layout::Indented)?;
         } else {
-            let told = single(&chosen).map(card).unwrap_or_else(|| {
+            let told = if let Some(record) = single(&chosen) {
+                card(record)
+            } else {
                 let tables: Vec<String> = chosen.iter().map(listing::text).collect();
                 tables.join("\n")
-            });
+            };
             console.result(&told)?;
         }
         Ok(Outcome::Done)

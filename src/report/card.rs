@@ -196,7 +196,7 @@ fn lines(value: &Value, form: Form) -> Vec<String> {
             let mut told = words(&parts["value"], form);
             if let Some(Value::Array(ends)) = parts.get("range") {
                 let ends: Vec<String> = ends.iter().map(|end| words(end, form)).collect();
-                told.push_str(&format!(" ({})", ends.join(" to ")));
+                told.extend([" (", &ends.join(" to "), ")"]);
             }
             let of = |key: &str| {
                 parts
