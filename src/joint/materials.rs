@@ -129,7 +129,12 @@ fn meant<'a>(name: &str, own: &[&'a str]) -> Vec<&'a str> {
     for word in catalog::family_words().filter(|word| word.len() > 3) {
         known.push(word);
     }
-    for other in catalog::names(catalog::Kind::Materials) {
+    let names = catalog::materials().iter().flat_map(|material| {
+        std::iter::once(&material.name)
+            .chain(&material.aliases)
+            .map(String::as_str)
+    });
+    for other in names {
         if number.is_none() || self::number(other) == number {
             known.push(other);
         }
