@@ -205,7 +205,7 @@ mod tests {
         material/room-temperature-data material/above-range material/galvanic material/brittle
         service/air-flatters-vacuum service/vacuum-materials service/isolation-and-bonding
         service/hot-surface service/defer service/spreading-limited resistance/cell
-        resistance/edge-sink resistance/bypass
+        resistance/edge-sink resistance/bypass resistance/grid-error
         law/elastic-plastic law/plastic law/elastic law/gas-gap law/radiation law/paste law/plating
         law/torque law/nut-factor law/strength-use law/settling law/cone law/ring-network law/cell
         law/lower-bound law/planes planes";

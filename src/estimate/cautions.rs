@@ -8,7 +8,7 @@ pub(super) use field::FLATNESS_DECIDES;
 use crate::{
     catalog,
     diagnostic::{Caution, registry},
-    estimate::{CaseResult, Chain, Realisation, group_label, surfaces},
+    estimate::{CaseResult, Chain, Realisation, chain::error_caution, group_label, surfaces},
     joint::{FillerKind, Joint, Medium},
     preload,
 };
@@ -84,6 +84,11 @@ fn preload_cautions(chain: &Chain) -> Vec<Caution> {
 
 fn resistance_cautions(chain: &Chain, cases: &[CaseResult]) -> Vec<Caution> {
     let mut found = Vec::new();
+    found.extend(
+        cases
+            .first()
+            .and_then(|case| error_caution(case.numerical_error)),
+    );
     if cases
         .first()
         .is_some_and(|case| case.resistance_upper.is_none())
@@ -130,7 +135,7 @@ fn service_cautions(chain: &Chain, cases: &[CaseResult]) -> Vec<Caution> {
     let gas_matters = !surfaces::bridged(joint) && joint.filler.is_none();
     match &joint.service.medium {
         Medium::Gas { gas, .. } if gas_matters => {
-            found.extend(flatters(joint, &gas.name, cases));
+            found.extend(flatters(chain, &gas.name, cases));
         }
         Medium::Vacuum => found.extend(vacuum_materials(joint)),
         Medium::Gas { .. } => {}
@@ -161,11 +166,9 @@ fn service_cautions(chain: &Chain, cases: &[CaseResult]) -> Vec<Caution> {
 }
 
 /// How much better the joint reads in its gas than it would in vacuum.
-fn flatters(joint: &Joint, gas: &str, cases: &[CaseResult]) -> Option<Caution> {
-    let mut evacuated = joint.clone();
-    evacuated.service.medium = Medium::Vacuum;
-    let chain = Chain::new(&evacuated).ok()?;
-    let vacuum = chain.state(0, &Realisation::default()).ok()?.path;
+fn flatters(chain: &Chain, gas: &str, cases: &[CaseResult]) -> Option<Caution> {
+    let evacuated = chain.in_vacuum().ok()?;
+    let vacuum = evacuated.state(0, &Realisation::default()).ok()?.path;
     let case = cases.first()?;
     let ratio = vacuum.added_by_joint / case.results.added_by_joint.resistance.nominal;
     Some(caution(
