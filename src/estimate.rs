@@ -17,7 +17,7 @@ pub use crate::resistance::RingRow;
 use crate::{
     diagnostic::Assumption,
     joint::{Fastener, Joint, Sink, Zone},
-    resistance::Path,
+    resistance::{self, Path},
 };
 
 /// How many draws, from which seed.
@@ -72,16 +72,17 @@ pub enum Failure {
         "plate `{0}` has no hardness, so its bare contact cannot be computed; give `hardness`, a filler or measured points"
     )]
     NoHardness(String),
-    /// The heated zone or a cell carries nothing.
-    #[error(
-        "the conduction network of case `{case}` did not give a number ({reading}); check the file with `ringsum check`"
-    )]
-    NotFinite {
+    /// The networks of a case gave no number.
+    #[error("the heat through the plates has no number in case `{case}`: {found}")]
+    Network {
         /// Name of the case.
         case: &'static str,
-        /// What was not finite.
-        reading: String,
+        /// What failed.
+        found: resistance::Failure,
     },
+    /// The plates could not be cut into networks.
+    #[error("the plates cannot be cut into networks: {0}")]
+    Plates(#[from] resistance::Failure),
     /// No clamp force is left.
     #[error(
         "no clamp force is left in service at {bolts} of {of} bolts in case `{case}`, so the joint is open there; raise the preload, lengthen the grip or match the expansion"
@@ -125,8 +126,8 @@ pub enum Failure {
 /// The chain at nominal inputs: every result without a band.
 pub fn nominal(chain: &Chain, options: &Options) -> Result<Estimate, Failure> {
     let joint = chain.joint();
-    let first = chain.state(0, &Realisation::default())?;
-    let error = chain.discretisation_error(&first);
+    let first = closed(chain, 0)?;
+    let error = chain.discretisation_error(&first)?;
     let cases = (0..joint.service.cases.len())
         .map(|case| case_result(chain, case, error))
         .collect::<Result<Vec<CaseResult>, Failure>>()?;
@@ -162,20 +163,7 @@ fn assumptions(joint: &Joint) -> Vec<Assumption> {
 fn case_result(chain: &Chain, case: usize, numerical_error: f64) -> Result<CaseResult, Failure> {
     let joint = chain.joint();
     let named = &joint.service.cases[case];
-    let state = chain.state(case, &Realisation::default())?;
-    let open = state
-        .conditions
-        .forces
-        .iter()
-        .filter(|force| **force <= 0.0)
-        .count();
-    if open > 0 {
-        return Err(Failure::Open {
-            bolts: open,
-            of: state.conditions.forces.len(),
-            case: named.name,
-        });
-    }
+    let state = closed(chain, case)?;
     let bolts = chain.bolts(case, &state);
     let pressure = chain.pressure(&state);
     let path = &state.path;
@@ -199,6 +187,21 @@ fn case_result(chain: &Chain, case: usize, numerical_error: f64) -> Result<CaseR
         requirement: None,
         drivers: Vec::new(),
     })
+}
+
+/// The nominal state of a case in which every bolt still clamps.
+fn closed(chain: &Chain, case: usize) -> Result<State, Failure> {
+    let state = chain.state(case, &Realisation::default())?;
+    let forces = &state.conditions.forces;
+    let open = forces.iter().filter(|force| **force <= 0.0).count();
+    if open > 0 {
+        return Err(Failure::Open {
+            bolts: open,
+            of: forces.len(),
+            case: chain.joint().service.cases[case].name,
+        });
+    }
+    Ok(state)
 }
 
 fn results(path: &Path) -> Results {

@@ -9,7 +9,9 @@ pub mod annulus;
 mod calibration;
 pub mod cells;
 pub mod column;
+mod failure;
 pub mod field;
+mod neighbours;
 pub mod network;
 pub mod path;
 pub mod plan_grid;
@@ -21,6 +23,7 @@ mod fixtures;
 
 pub use calibration::Calibration;
 pub use cells::{Cells, Plan, Site, cells};
+pub use failure::Failure;
 pub use field::RingRow;
 pub use path::{Load, Path};
-pub use plan_grid::{PlanGrid, plan_grid};
+pub use plan_grid::{Perfect, PlanGrid, plan_grid};

@@ -26,11 +26,16 @@ pub const QUANTILES: [f64; 2] = [0.05, 0.95];
 
 /// The chain at nominal inputs, the band of the draws around it, and what dominates the band.
 pub fn estimate(joint: &Joint, options: &Options) -> Result<Estimate, Failure> {
-    let chain = Chain::new(joint)?;
-    let mut found = estimate::nominal(&chain, options)?;
+    along(&Chain::new(joint)?, options)
+}
+
+/// The same for a joint whose chain is prepared.
+pub fn along(chain: &Chain, options: &Options) -> Result<Estimate, Failure> {
+    let joint = chain.joint();
+    let mut found = estimate::nominal(chain, options)?;
     if options.draws > 0 {
         for case in 0..found.cases.len() {
-            let draws = draws(&chain, case, options)?;
+            let draws = draws(chain, case, options)?;
             apply(&draws, joint, &mut found.cases[case]);
         }
     }

@@ -3,7 +3,7 @@
 use crate::{
     cli::console::Trouble,
     diagnostic,
-    estimate::{self, Estimate, Failure, FieldMap, Options, RingRow, TorqueSweep},
+    estimate::{self, Chain, Estimate, Failure, FieldMap, Options, RingRow, TorqueSweep},
     figures::{self, Drawing, Format},
     joint::Joint,
     uncertainty::{self, SweepOptions},
@@ -20,14 +20,28 @@ pub fn torque_sweep(joint: &Joint, options: &SweepOptions) -> Result<TorqueSweep
     Ok(uncertainty::torque_sweep(joint, options)?)
 }
 
-/// Pressure and conductance over the plan.
-pub fn field_map(joint: &Joint, columns: usize) -> Result<FieldMap, Trouble> {
-    Ok(estimate::field_map(joint, columns)?)
+/// An estimate with the rings of every bolt.
+pub fn with_rings(
+    joint: &Joint,
+    options: &Options,
+) -> Result<(Estimate, Vec<Vec<RingRow>>), Trouble> {
+    let chain = Chain::new(joint)?;
+    let found = uncertainty::along(&chain, options)?;
+    Ok((found, estimate::ring_tables(&chain)?))
 }
 
-/// The rings of every bolt.
-pub fn ring_tables(joint: &Joint) -> Result<Vec<Vec<RingRow>>, Trouble> {
-    Ok(estimate::ring_tables(joint)?)
+/// What the figures show: nominal results, fields over the plan, rings of every bolt.
+pub fn fields(
+    joint: &Joint,
+    columns: usize,
+) -> Result<(Estimate, FieldMap, Vec<Vec<RingRow>>), Trouble> {
+    let chain = Chain::new(joint)?;
+    let nominal = uncertainty::along(&chain, &Options { draws: 0, seed: 1 })?;
+    Ok((
+        nominal,
+        estimate::field_map(&chain, columns)?,
+        estimate::ring_tables(&chain)?,
+    ))
 }
 
 impl From<Failure> for Trouble {

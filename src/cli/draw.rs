@@ -7,7 +7,6 @@ use crate::{
         drawings,
         output::{Existing, Target},
     },
-    estimate::Options,
     figures::Format,
 };
 use clap::{Args, ValueEnum};
@@ -79,9 +78,7 @@ impl Draw {
         }
         let (_, joint) =
             check::read(&self.file, &self.sets, console).map_err(|refused| refused.trouble())?;
-        let nominal = chain::estimate(&joint, &Options { draws: 0, seed: 1 })?;
-        let field = chain::field_map(&joint, COLUMNS)?;
-        let rings = chain::ring_tables(&joint)?;
+        let (nominal, field, rings) = chain::fields(&joint, COLUMNS)?;
         let mut files = Vec::new();
         for (name, drawing) in drawings::of_joint(&joint, &nominal, (&field, &rings)) {
             for format in formats {

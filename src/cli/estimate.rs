@@ -136,14 +136,12 @@ impl Estimate {
                 return Err(refused.trouble());
             }
         };
-        let found = chain::estimate(&joint, &self.draws.options()).and_then(|estimate| {
-            let rings = if self.rings {
-                chain::ring_tables(&joint)?
-            } else {
-                Vec::new()
-            };
-            Ok((estimate, rings))
-        });
+        let options = self.draws.options();
+        let found = if self.rings {
+            chain::with_rings(&joint, &options)
+        } else {
+            chain::estimate(&joint, &options).map(|estimate| (estimate, Vec::new()))
+        };
         match found {
             Ok((estimate, rings)) => {
                 self.tell(&source.name, (&estimate, &rings), console)?;

@@ -8,7 +8,9 @@ pub(super) use field::{FLATNESS_DECIDES, GAP_IGNORED};
 use crate::{
     catalog,
     diagnostic::{Caution, registry},
-    estimate::{CaseResult, Chain, Failure, Realisation, State, group_label, surfaces},
+    estimate::{
+        CaseResult, Chain, Failure, Realisation, State, chain::error_caution, group_label, surfaces,
+    },
     joint::{FillerKind, Joint, Medium, Sink},
     preload,
 };
@@ -34,7 +36,7 @@ pub fn gathered(chain: &Chain, cases: &[CaseResult]) -> Result<Vec<Caution>, Fai
     found.extend(faces::conductance_cautions(joint, &state, cases));
     found.extend(faces::material_cautions(joint));
     found.extend(resistance_cautions(joint, &state, cases));
-    found.extend(service_cautions(joint, cases)?);
+    found.extend(service_cautions(chain, cases)?);
     let mut told: Vec<Caution> = Vec::new();
     for caution in found {
         if !told.contains(&caution) {
@@ -91,6 +93,11 @@ fn preload_cautions(chain: &Chain) -> Vec<Caution> {
 
 fn resistance_cautions(joint: &Joint, state: &State, cases: &[CaseResult]) -> Vec<Caution> {
     let mut found = Vec::new();
+    found.extend(
+        cases
+            .first()
+            .and_then(|case| error_caution(case.numerical_error)),
+    );
     if cases
         .first()
         .is_some_and(|case| case.resistance_upper.is_none())
@@ -139,12 +146,13 @@ fn resistance_cautions(joint: &Joint, state: &State, cases: &[CaseResult]) -> Ve
     found
 }
 
-fn service_cautions(joint: &Joint, cases: &[CaseResult]) -> Result<Vec<Caution>, Failure> {
+fn service_cautions(chain: &Chain, cases: &[CaseResult]) -> Result<Vec<Caution>, Failure> {
+    let joint = chain.joint();
     let mut found = Vec::new();
     let gas_matters = !surfaces::bridged(joint) && joint.filler.is_none();
     match &joint.service.medium {
         Medium::Gas { gas, .. } if gas_matters => {
-            found.extend(flatters(joint, &gas.name, cases)?);
+            found.extend(flatters(chain, &gas.name, cases)?);
         }
         Medium::Vacuum => found.extend(vacuum_materials(joint)),
         Medium::Gas { .. } => {}
@@ -175,14 +183,14 @@ fn service_cautions(joint: &Joint, cases: &[CaseResult]) -> Result<Vec<Caution>,
 }
 
 /// How much better the joint reads in its gas than it would in vacuum.
-fn flatters(joint: &Joint, gas: &str, cases: &[CaseResult]) -> Result<Option<Caution>, Failure> {
+fn flatters(chain: &Chain, gas: &str, cases: &[CaseResult]) -> Result<Option<Caution>, Failure> {
     let Some(case) = cases.first() else {
         return Ok(None);
     };
-    let mut evacuated = joint.clone();
-    evacuated.service.medium = Medium::Vacuum;
-    let chain = Chain::new(&evacuated)?;
-    let vacuum = chain.state(0, &Realisation::default())?.path;
+    let vacuum = chain
+        .in_vacuum()?
+        .state(0, &Realisation::default())?
+        .path;
     let ratio = vacuum.added_by_joint / case.results.added_by_joint.resistance.nominal;
     Ok(Some(caution(
         "service/air-flatters-vacuum",

@@ -6,12 +6,11 @@ use crate::{
 };
 
 /// Pressure and local conductance over the window of both plates, `columns` points wide.
-pub fn field_map(joint: &Joint, columns: usize) -> Result<FieldMap, Failure> {
-    let chain = Chain::new(joint)?;
+pub fn field_map(chain: &Chain, columns: usize) -> Result<FieldMap, Failure> {
     let state = chain.state(0, &Realisation::default())?;
     let peak = chain.pressure(&state).peak;
     let faces = state.conditions.faces.over_many_points(peak);
-    let window = window(joint);
+    let window = window(chain.joint());
     let [left, lower, right, upper] = window;
     let step = (right - left) / columns as f64;
     let rows = ((upper - lower) / step).round().max(1.0) as usize;
@@ -34,8 +33,7 @@ pub fn field_map(joint: &Joint, columns: usize) -> Result<FieldMap, Failure> {
 }
 
 /// The rings around every bolt, in file order.
-pub fn ring_tables(joint: &Joint) -> Result<Vec<Vec<RingRow>>, Failure> {
-    let chain = Chain::new(joint)?;
+pub fn ring_tables(chain: &Chain) -> Result<Vec<Vec<RingRow>>, Failure> {
     let state = chain.state(0, &Realisation::default())?;
     let load = state.conditions.load();
     Ok((0..state.conditions.forces.len())

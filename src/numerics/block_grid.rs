@@ -7,6 +7,16 @@ const MOST_ROUNDS: usize = 5000;
 /// Square of the relative residual, in the preconditioned norm, at which the solution is done.
 const DONE: f64 = 1e-16;
 
+/// Why a system was given up.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Stopped {
+    /// Rounds done.
+    pub rounds: usize,
+    /// Residual left over the right-hand side, both in the preconditioned norm; not a number where
+    /// the matrix is not positive definite.
+    pub residual: f64,
+}
+
 /// Two sheets of nodes, joined node by node; node (i, j) has the index j · columns + i.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Sheets {
@@ -42,9 +52,12 @@ impl Sheets {
     }
 
     /// The solution for one right-hand side by conjugate gradients with an incomplete block
-    /// factor; none when the matrix is not positive definite or the rounds run out.
-    pub fn solution(&self, load: &[[f64; 2]]) -> Option<Vec<[f64; 2]>> {
-        let inverses = self.incomplete_factor()?;
+    /// factor; given up when the matrix is not positive definite or the rounds run out.
+    pub fn solution(&self, load: &[[f64; 2]]) -> Result<Vec<[f64; 2]>, Stopped> {
+        let inverses = self.incomplete_factor().ok_or(Stopped {
+            rounds: 0,
+            residual: f64::NAN,
+        })?;
         let mut x = vec![[0.0; 2]; load.len()];
         let mut residual = load.to_vec();
         let mut turned = vec![[0.0; 2]; load.len()];
@@ -52,15 +65,19 @@ impl Sheets {
         let mut direction = turned.clone();
         let mut image = vec![[0.0; 2]; load.len()];
         let mut norm = dot(&residual, &direction);
-        let done = DONE * norm;
-        for _ in 0..MOST_ROUNDS {
-            if norm <= done {
-                return Some(x);
+        let whole = norm;
+        let stopped = |rounds: usize, norm: f64| Stopped {
+            rounds,
+            residual: (norm / whole).sqrt(),
+        };
+        for rounds in 0..MOST_ROUNDS {
+            if norm <= DONE * whole {
+                return Ok(x);
             }
             self.product(&direction, &mut image);
             let curvature = dot(&direction, &image);
             if curvature.is_nan() || curvature <= 0.0 {
-                return None;
+                return Err(stopped(rounds, norm));
             }
             let length = norm / curvature;
             add(&mut x, length, &direction);
@@ -73,7 +90,7 @@ impl Sheets {
                 *old = [new[0] + keep * old[0], new[1] + keep * old[1]];
             }
         }
-        None
+        Err(stopped(MOST_ROUNDS, norm))
     }
 
     /// The matrix times `x`, into `image`.
@@ -210,6 +227,15 @@ mod tests {
     #[test]
     fn a_floating_sheet_is_refused() {
         let sheets = Sheets::new(3, 1);
-        assert_eq!(sheets.solution(&[[1.0, 0.0]; 3]), None);
+        let stopped = sheets.solution(&[[1.0, 0.0]; 3]).unwrap_err();
+        assert!(stopped.rounds == 0 && stopped.residual.is_nan());
+    }
+
+    #[test]
+    fn a_right_hand_side_that_is_no_number_is_refused() {
+        let mut sheets = Sheets::new(2, 1);
+        sheets.blocks = vec![[1.0, 0.0, 1.0]; 2];
+        assert!(sheets.solution(&[[f64::NAN, 0.0]; 2]).is_err());
+        assert!(sheets.solution(&[[f64::INFINITY, 0.0]; 2]).is_err());
     }
 }

@@ -1,6 +1,6 @@
 //! What the plan grid finds at nominal, carried over to draws that solve the fast cells.
 
-use crate::resistance::path::Path;
+use crate::resistance::{failure::Failure, path::Path};
 
 /// Corrections that turn the cells' answer into the plan grid's at one load.
 ///
@@ -26,8 +26,9 @@ enum Correction {
 }
 
 impl Correction {
+    /// An infinite answer of the cells stays infinite: some bolt conducts nothing there.
     fn between(from: f64, to: f64) -> Self {
-        if !from.is_finite() || !to.is_finite() {
+        if from.is_infinite() {
             Self::Factor(1.0)
         } else if from > 0.0 && to > 0.0 {
             Self::Factor(to / from)
@@ -45,16 +46,29 @@ impl Correction {
 }
 
 impl Calibration {
-    /// From the answers of both at the same load.
-    pub fn between(cells: &Path, grid: &Path) -> Self {
-        let correction = |of: &dyn Fn(&Path) -> f64| Correction::between(of(cells), of(grid));
-        Self {
-            perfect_contact: correction(&|path| path.perfect_contact),
-            added_by_joint: correction(&|path| path.added_by_joint),
-            node_to_node: correction(&|path| path.node_to_node),
-            interface_drop: correction(&|path| path.interface_drop),
-            hottest: correction(&|path| path.hottest),
-        }
+    /// From the answers of both at the same load; refused where one of them cannot be.
+    pub fn between(cells: &Path, grid: &Path) -> Result<Self, Failure> {
+        cells.checked("the cells")?;
+        grid.checked("the plan grid")?;
+        let correction = |reading: &'static str, of: &dyn Fn(&Path) -> f64| {
+            let (from, to) = (of(cells), of(grid));
+            // The grid may find a way past a bolt that conducts nothing, never the other way round.
+            if from.is_finite() && !to.is_finite() {
+                return Err(Failure::NotFinite {
+                    network: "the plan grid",
+                    reading,
+                    value: to,
+                });
+            }
+            Ok(Correction::between(from, to))
+        };
+        Ok(Self {
+            perfect_contact: correction("perfect contact", &|path| path.perfect_contact)?,
+            added_by_joint: correction("added by joint", &|path| path.added_by_joint)?,
+            node_to_node: correction("node to node", &|path| path.node_to_node)?,
+            interface_drop: correction("interface drop", &|path| path.interface_drop)?,
+            hottest: correction("hottest", &|path| path.hottest)?,
+        })
     }
 
     /// The corrected answer; contact, bounds and film drop stay as they are.

@@ -4,6 +4,8 @@ use crate::{
     joint::{Outline, Sink, Source, Zone},
     pressure::Cone,
     resistance::{
+        failure::Failure,
+        neighbours::{Neighbours, neighbours},
         network::Rings,
         region::{Region, Side},
         rings::{self, Patches},
@@ -47,8 +49,6 @@ pub struct Cells {
     pub(super) plan: Plan,
     /// One for each bolt.
     pub(super) fine: Vec<Cell>,
-    /// The same joint with half the rings, for the ring error.
-    pub(super) coarse: Vec<Cell>,
     /// Area of each plate without holes, m².
     pub plate_area: [f64; 2],
     /// Area of the faying faces without holes, m².
@@ -93,7 +93,8 @@ pub(super) struct View {
     /// Faying face inside the cell.
     pub(super) interface: Extent,
     pub(super) source: Extent,
-    /// Every other bolt: its index and its place seen from here.
+    /// Every other bolt near enough to matter, the nearest first: its index and its place seen
+    /// from here.
     pub(super) others: Vec<(usize, [f64; 2])>,
 }
 
@@ -152,27 +153,11 @@ impl Plan {
 
     pub(super) fn view(&self, bolt: usize) -> View {
         let axis = self.sites[bolt].at;
-        let others: Vec<(usize, [f64; 2])> = (0..self.sites.len())
-            .filter(|other| *other != bolt)
-            .map(|other| {
-                let at = self.sites[other].at;
-                (other, [at[0] - axis[0], at[1] - axis[1]])
-            })
-            .collect();
-        let nearer: Vec<Side> = others
-            .iter()
-            .map(|(_, to)| {
-                let distance = to[0].hypot(to[1]);
-                Side::Line {
-                    normal: [to[0] / distance, to[1] / distance],
-                    offset: 0.5 * distance,
-                }
-            })
-            .collect();
         let plate = [0, 1].map(|plate| {
             let (outline, origin) = &self.outlines[plate];
             outline_sides(outline, *origin, axis)
         });
+        let Neighbours { others, nearer } = neighbours(self, bolt, &plate);
         let extent = |sides: &[&[Side]], hole_radius: f64, hole: &dyn Fn(usize) -> f64| {
             let sides: Vec<Side> = sides.concat();
             let intruding = others
@@ -235,12 +220,33 @@ impl Plan {
 /// Cuts a plan into cells and rings.
 ///
 /// Checked: `cells_cover_the_plates`, `pressure_carries_the_force_whatever_the_edges`.
-pub fn cells(plan: &Plan) -> Cells {
-    let views: Vec<View> = (0..plan.sites.len()).map(|bolt| plan.view(bolt)).collect();
-    let total = |area: &dyn Fn(&View) -> f64| views.iter().map(area).sum::<f64>();
-    let (fine, carried) = rings::build(plan, &views, plan.rings);
-    let (coarse, _) = rings::build(plan, &views, (plan.rings / 2).max(4));
-    let cut_share = carried
+pub fn cells(plan: &Plan) -> Result<Cells, Failure> {
+    let mut found = Cells {
+        plan: plan.clone(),
+        fine: Vec::with_capacity(plan.sites.len()),
+        plate_area: [0.0; 2],
+        interface_area: 0.0,
+        source_area: 0.0,
+        cut_share: Vec::new(),
+        overlaps: (0..plan.sites.len())
+            .map(|bolt| plan.overlapping(bolt))
+            .collect(),
+        restored: Vec::new(),
+    };
+    for bolt in 0..plan.sites.len() {
+        // Thousands of views at once would fill the memory.
+        let view = plan.view(bolt);
+        let area = |extent: &Extent| extent.area_within(f64::INFINITY);
+        for plate in 0..2 {
+            found.plate_area[plate] += area(&view.plates[plate]);
+        }
+        found.interface_area += area(&view.interface);
+        found.source_area += area(&view.source);
+        found.fine.push(rings::cell(plan, &view, bolt));
+    }
+    let carried = rings::restore(&mut found.fine)?;
+    rings::pair_up(&mut found.fine);
+    found.cut_share = carried
         .iter()
         .enumerate()
         .map(|(bolt, share)| {
@@ -251,19 +257,8 @@ pub fn cells(plan: &Plan) -> Cells {
             }
         })
         .collect();
-    Cells {
-        plate_area: [0, 1].map(|k| total(&|view| view.plates[k].area_within(f64::INFINITY))),
-        interface_area: total(&|view| view.interface.area_within(f64::INFINITY)),
-        source_area: total(&|view| view.source.area_within(f64::INFINITY)),
-        cut_share,
-        overlaps: (0..plan.sites.len())
-            .map(|bolt| plan.overlapping(bolt))
-            .collect(),
-        restored: carried.iter().map(|share| share.recip()).collect(),
-        fine,
-        coarse,
-        plan: plan.clone(),
-    }
+    found.restored = carried.iter().map(|share| share.recip()).collect();
+    Ok(found)
 }
 
 #[cfg(test)]

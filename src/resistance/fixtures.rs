@@ -132,3 +132,22 @@ pub(super) fn assert_same(one: &Path, other: &Path, tolerance: f64) {
         assert!((a / b - 1.0).abs() < tolerance, "{one:?}\n{other:?}");
     }
 }
+
+/// A square lattice of M4, heated all over: every bolt is as every other.
+pub(super) fn lattice(side: usize, pitch: f64) -> Plan {
+    let pair = pair([2.25e-3, 3.5e-3], f64::INFINITY, [5e-3; 2]);
+    let middle = |index: usize| (index as f64 + 0.5) * pitch;
+    let outline = Outline::Rectangle {
+        size: [side as f64 * pitch; 2],
+    };
+    Plan {
+        outlines: [(outline, [0.0; 2]); 2],
+        thickness: [5e-3; 2],
+        sites: (0..side * side)
+            .map(|index| site([middle(index % side), middle(index / side)], &pair))
+            .collect(),
+        source: WHOLE_FACE,
+        sink: Sink::Film(500.0),
+        rings: DEFAULT_RINGS,
+    }
+}

@@ -30,6 +30,10 @@ impl Rings {
         let couplings: Vec<Coupling> = (0..count)
             .map(|ring| self.columns.couple(ring, &constants, conductance))
             .collect();
+        // Apart, the first plate would float, and rounding could pass for a path.
+        if couplings.iter().map(Coupling::total).sum::<f64>() <= 0.0 {
+            return None;
+        }
         let mut ladder = Ladder::new(count);
         let mut load = vec![[0.0; 2]; count];
         for ring in 0..count {

@@ -3,8 +3,9 @@
 use crate::{
     joint::{Outline, Sink, Zone},
     resistance::{
-        cells::{Cell, Cells},
+        cells::{Cell, Cells, Plan, cells},
         column::{Flow, Inlet, Outlet, Plates},
+        failure::Failure,
     },
 };
 
@@ -123,12 +124,15 @@ impl Cells {
         whole: &Whole,
         perfect: &Whole,
     ) -> Path {
-        let contact: Vec<f64> = self
-            .fine
-            .iter()
-            .enumerate()
-            .map(|(index, cell)| cell.faces(index, load, Shanks::None).contact)
-            .collect();
+        let mut contact: Vec<f64> = Vec::with_capacity(self.fine.len());
+        for (index, cell) in self.fine.iter().enumerate() {
+            let twin = self.twin(&self.fine, index, load);
+            contact.push(if twin == index {
+                cell.faces(index, load, Shanks::None).contact
+            } else {
+                contact[twin]
+            });
+        }
         self.path_of(load, &contact, [whole, perfect])
     }
 
@@ -160,21 +164,13 @@ impl Cells {
     /// Difference of source to sink between all and half of the rings, relative.
     ///
     /// The method is of second order in the ring width, so the error left is about a third of it.
-    pub fn ring_error<H: Fn(f64) -> f64>(&self, load: &Load<H>) -> f64 {
-        let [fine, coarse] = [&self.fine, &self.coarse].map(|cells| {
-            let twins: Vec<usize> = (0..cells.len())
-                .map(|index| self.twin(cells, index, load))
-                .collect();
-            let whole = self.whole(cells, &twins, load, |index| {
-                Some(
-                    cells[index]
-                        .faces(index, load, Shanks::Parallel)
-                        .conductance,
-                )
-            });
-            whole.source - self.film_drop()
-        });
-        ((coarse - fine) / fine).abs()
+    pub fn ring_error<H: Fn(f64) -> f64>(&self, load: &Load<H>) -> Result<f64, Failure> {
+        let coarse = cells(&Plan {
+            rings: (self.plan.rings / 2).max(4),
+            ..self.plan.clone()
+        })?;
+        let [fine, coarse] = [self, &coarse].map(|cells| cells.solve(load).source_to_sink);
+        Ok(((coarse - fine) / fine).abs())
     }
 
     /// The first cell whose solution serves this one: same rings, same forces, same shank.
@@ -203,10 +199,10 @@ impl Cells {
         }
     }
 
-    pub(super) fn plates<H>(&self, load: &Load<H>) -> Plates {
+    pub(super) fn plates(&self, conductivity: [f64; 2]) -> Plates {
         Plates {
             thickness: self.plan.thickness,
-            conductivity: load.conductivity,
+            conductivity,
             inlet: if self.plan.source.isothermal {
                 Inlet::Temperature
             } else {
@@ -228,7 +224,7 @@ impl Cells {
         load: &Load<H>,
         conductance: impl Fn(usize) -> Option<Vec<f64>>,
     ) -> Whole {
-        let plates = self.plates(load);
+        let plates = self.plates(load.conductivity);
         let mut sum = Flow {
             hottest: f64::NEG_INFINITY,
             ..Flow::default()

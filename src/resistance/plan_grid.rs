@@ -4,32 +4,47 @@
 //! edges and holes are partial cells. No borders between bolts, so neither the too wide nor the
 //! too narrow ways of the cells; an estimate from no certain side.
 
+mod around;
+mod cover;
+mod filling;
+mod lines;
+
+use std::sync::Arc;
+
+use lines::Axis;
+
 use crate::{
-    joint::{Outline, Sink, Zone},
+    joint::Sink,
     numerics::block_grid::Sheets,
     resistance::{
-        cells::{Cells, Plan},
+        cells::Cells,
         column::{Columns, Coupling, Flow, Inlet, Plates},
+        failure::Failure,
         path::{Load, Path, Whole},
         rings::Patches,
     },
 };
 
-/// Points along each side of a grid cell that sample edges, holes and pressure.
-const SAMPLES: u32 = 4;
-/// Grid lines across the ring from the hole to the contact edge, at fineness 1.
-const LINES_IN_CONTACT: f64 = 4.0;
-/// Widest cell as a share of the longer side of the plan, at fineness 1.
-const WIDEST: f64 = 1.0 / 24.0;
-/// Most nodes at fineness 1; forty bolts at half of it change the answer by 0.7 %.
-const MOST_NODES: f64 = 10_000.0;
-/// Growth of the cell width with distance from the contact edge.
-const GROWTH: f64 = 0.25;
+/// What this network is called in a failure.
+const GRID: &str = "the plan grid";
+/// Its solver.
+const SOLVER: &str = "the plan grid, by conjugate gradients,";
+/// Nodes that are always granted, at fineness 1; ten bolts need fewer.
+const FEW_NODES: f64 = 10_000.0;
+/// Nodes granted for each bolt, at fineness 1: enough for every bolt of a lattice at twelve times
+/// its thread, and for bolts that stand in no rows at half of it.
+const NODES_PER_BOLT: f64 = 1200.0;
+/// Most nodes at fineness 1: at the usual fineness a few seconds and some hundred megabytes.
+const MOST_NODES: f64 = 1_000_000.0;
 
 /// Both plates of a joint on one graded grid, ready for any load.
 #[derive(Clone, Debug, PartialEq)]
 pub struct PlanGrid {
-    cells: Cells,
+    cells: Arc<Cells>,
+    /// Fineness asked for.
+    asked: f64,
+    /// What was granted of it.
+    fineness: f64,
     size: [usize; 2],
     columns: Columns,
     patches: Patches,
@@ -42,287 +57,128 @@ pub struct PlanGrid {
     rim_shape: Vec<f64>,
 }
 
+/// The plates in perfect contact: what no force and no face moves.
+#[derive(Clone, Copy, Debug)]
+pub struct Perfect {
+    conductivity: [f64; 2],
+    whole: Whole,
+}
+
 /// Puts a plan on a grid; fineness 1 is the normal one, 2 halves every cell.
 ///
-/// Many bolts get a coarser grid, so that a solution stays well below a second.
-pub fn plan_grid(cells: &Cells, fineness: f64) -> PlanGrid {
+/// Every bolt gets the lines that a few get, up to a number of nodes that is solved in seconds;
+/// beyond it the grid is coarser than asked, and `is_starved` says so.
+pub fn plan_grid(cells: &Arc<Cells>, fineness: f64) -> Result<PlanGrid, Failure> {
+    let bolts = cells.plan.sites.len() as f64;
+    let most = (NODES_PER_BOLT * bolts).clamp(FEW_NODES, MOST_NODES) * fineness * fineness;
+    within(cells, fineness, most)
+}
+
+/// A grid of no more than a number of nodes.
+fn within(cells: &Arc<Cells>, fineness: f64, most: f64) -> Result<PlanGrid, Failure> {
     let plan = &cells.plan;
-    let mut coarser = fineness;
-    let mut lines = [0, 1].map(|axis| grid_lines(plan, axis, coarser));
-    while (lines[0].len() * lines[1].len()) as f64 > MOST_NODES * fineness * fineness {
-        coarser *= 0.9;
-        lines = [0, 1].map(|axis| grid_lines(plan, axis, coarser));
+    let axes = [0, 1].map(|axis| Axis::new(plan, axis));
+    let count = |fineness: f64| (axes[0].count(fineness) * axes[1].count(fineness)) as f64;
+    let mut granted = fineness;
+    while count(granted) > most && granted > 1e-3 * fineness {
+        granted *= 0.95;
     }
+    let lines = [0, 1].map(|axis| axes[axis].lines(granted));
     let size = [lines[0].len() - 1, lines[1].len() - 1];
+    let (columns, patches) = filling::columns();
     let mut grid = PlanGrid {
         size,
-        columns: Columns {
-            first_patch: vec![0],
-            ..Columns::default()
-        },
-        patches: Patches {
-            first_weight: vec![0],
-            weights: Vec::new(),
-        },
+        asked: fineness,
+        fineness: granted,
+        columns,
+        patches,
         under_head: Vec::new(),
         head_area: vec![0.0; plan.sites.len()],
         shape: vec![[[0.0; 2]; 2]; size[0] * size[1]],
         rim_shape: vec![0.0; size[0] * size[1]],
         cells: cells.clone(),
     };
-    for j in 0..size[1] {
-        for i in 0..size[0] {
-            grid.sample(
-                [lines[0][i], lines[1][j]],
-                [lines[0][i + 1], lines[1][j + 1]],
-            );
-            grid.join([i, j], &lines);
-        }
-    }
-    grid.settle();
-    grid
+    grid.fill(&lines)?;
+    Ok(grid)
 }
 
-/// Grid lines along one axis: at every edge, close in the contacts, wide between.
-fn grid_lines(plan: &Plan, axis: usize, fineness: f64) -> Vec<f64> {
-    let mut stops: Vec<f64> = Vec::new();
-    let mut add = |outline: &Outline, at: f64| match *outline {
-        Outline::Rectangle { size } => stops.extend([at, at + size[axis]]),
-        Outline::Disc { radius } => stops.extend([at - radius, at + radius]),
-    };
-    for (outline, origin) in &plan.outlines {
-        add(outline, origin[axis]);
+impl Perfect {
+    /// Whether this is the perfect contact of plates of these conductivities, W/(m K).
+    pub fn serves(&self, conductivity: [f64; 2]) -> bool {
+        (0..2).all(|plate| {
+            let off = self.conductivity[plate] / conductivity[plate] - 1.0;
+            off.abs() < 1e-12
+        })
     }
-    match plan.source.zone {
-        Zone::Face => {}
-        Zone::Rectangle { centre, size } => stops.extend([
-            centre[axis] - 0.5 * size[axis],
-            centre[axis] + 0.5 * size[axis],
-        ]),
-        Zone::Disc { centre, radius } => {
-            stops.extend([centre[axis] - radius, centre[axis] + radius]);
-        }
-    }
-    stops.sort_by(f64::total_cmp);
-    let extent = stops[stops.len() - 1] - stops[0];
-    stops.dedup_by(|next, stop| *next - *stop < 1e-6 * extent);
-    let width = |x: f64| {
-        let near = plan.sites.iter().map(|site| {
-            let cone = &site.cone;
-            let close = (cone.contact_radius - cone.hole_radius) / LINES_IN_CONTACT;
-            close + GROWTH * ((x - site.at[axis]).abs() - cone.contact_radius).max(0.0)
-        });
-        near.fold(WIDEST * extent, f64::min) / fineness
-    };
-    let mut lines = vec![stops[0]];
-    for pair in stops.windows(2) {
-        // ∫ dx/width by fine steps; lines at equal parts of it.
-        const STEPS: usize = 400;
-        let step = (pair[1] - pair[0]) / STEPS as f64;
-        let mut counted = vec![0.0];
-        for index in 0..STEPS {
-            let x = pair[0] + (index as f64 + 0.5) * step;
-            counted.push(counted[index] + step / width(x));
-        }
-        let parts = counted[STEPS].ceil().max(1.0) as usize;
-        for part in 1..parts {
-            let wanted = counted[STEPS] * part as f64 / parts as f64;
-            let after = counted.partition_point(|sum| *sum < wanted);
-            let back = (counted[after] - wanted) / (counted[after] - counted[after - 1]);
-            lines.push(pair[0] + (after as f64 - back) * step);
-        }
-        lines.push(pair[1]);
-    }
-    lines
-}
-
-fn inside(outline: &Outline, origin: [f64; 2], point: [f64; 2]) -> bool {
-    let [x, y] = [point[0] - origin[0], point[1] - origin[1]];
-    match *outline {
-        Outline::Rectangle { size } => (0.0..=size[0]).contains(&x) && (0.0..=size[1]).contains(&y),
-        Outline::Disc { radius } => x.hypot(y) <= radius,
-    }
-}
-
-impl Plan {
-    fn on_outline(&self, plate: usize, point: [f64; 2]) -> bool {
-        let (outline, origin) = &self.outlines[plate];
-        inside(outline, *origin, point)
-    }
-
-    fn on_plate(&self, plate: usize, (point, near): ([f64; 2], &[usize])) -> bool {
-        self.on_outline(plate, point)
-            && near.iter().all(|bolt| {
-                let site = &self.sites[*bolt];
-                (point[0] - site.at[0]).hypot(point[1] - site.at[1]) >= site.hole_radius[plate]
-            })
-    }
-
-    /// Bolts whose hole, head or contact can reach into a rectangle.
-    fn near(&self, low: [f64; 2], high: [f64; 2]) -> Vec<usize> {
-        let reaches = |bolt: &usize| {
-            let site = &self.sites[*bolt];
-            let reach = site
-                .cone
-                .contact_radius
-                .max(site.cone.bearing_radius)
-                .max(self.hole_radius(*bolt));
-            (0..2).all(|k| site.at[k] + reach >= low[k] && site.at[k] - reach <= high[k])
-        };
-        (0..self.sites.len()).filter(reaches).collect()
-    }
-
-    fn heated(&self, point: [f64; 2]) -> bool {
-        match self.source.zone {
-            Zone::Face => true,
-            Zone::Rectangle { centre, size } => {
-                (0..2).all(|k| (point[k] - centre[k]).abs() <= 0.5 * size[k])
-            }
-            Zone::Disc { centre, radius } => {
-                (point[0] - centre[0]).hypot(point[1] - centre[1]) <= radius
-            }
-        }
-    }
-}
-
-/// The middle of one of the samples between two coordinates.
-fn sample(low: f64, high: f64, index: u32) -> f64 {
-    low + (high - low) * (f64::from(index) + 0.5) / f64::from(SAMPLES)
 }
 
 impl PlanGrid {
-    /// Samples one grid cell: areas, patches of pressure, patches under heads.
-    fn sample(&mut self, low: [f64; 2], high: [f64; 2]) {
-        let plan = &self.cells.plan;
-        let near = plan.near(low, high);
-        let point_area = (high[0] - low[0]) * (high[1] - low[1]) / f64::from(SAMPLES * SAMPLES);
-        let (mut areas, mut source, mut open) = ([0.0; 2], 0.0, 0.0);
-        for index in 0..SAMPLES * SAMPLES {
-            let point = [
-                sample(low[0], high[0], index % SAMPLES),
-                sample(low[1], high[1], index / SAMPLES),
-            ];
-            let on = [0, 1].map(|plate| plan.on_plate(plate, (point, &near)));
-            for plate in 0..2 {
-                areas[plate] += if on[plate] { point_area } else { 0.0 };
-            }
-            if on[0] && plan.heated(point) {
-                source += point_area;
-            }
-            if !(on[0] && on[1]) {
-                continue;
-            }
-            let distances = near.iter().map(|bolt| {
-                let at = plan.sites[*bolt].at;
-                (*bolt, (point[0] - at[0]).hypot(point[1] - at[1]))
-            });
-            let weights: Vec<(usize, f64)> = distances
-                .clone()
-                .map(|(bolt, distance)| (bolt, plan.sites[bolt].cone.pressure(distance, 1.0)))
-                .filter(|(_, weight)| *weight > 0.0)
-                .collect();
-            let head = distances
-                .clone()
-                .find(|(bolt, distance)| *distance < plan.sites[*bolt].cone.bearing_radius);
-            if weights.is_empty() && head.is_none() {
-                open += point_area;
-                continue;
-            }
-            if let Some((bolt, _)) = head {
-                self.under_head.push((self.columns.patch_area.len(), bolt));
-                self.head_area[bolt] += point_area;
-            }
-            self.columns.patch_area.push(point_area);
-            self.patches.push(weights.into_iter());
-        }
-        if open > 0.0 {
-            self.columns.patch_area.push(open);
-            self.patches.push(std::iter::empty());
-        }
-        self.columns.first_patch.push(self.columns.patch_area.len());
-        self.columns.source_area.push(source);
-        for (plate, area) in areas.into_iter().enumerate() {
-            self.columns.plate_area[plate].push(area);
-        }
+    /// Whether the bolts would need more nodes than are granted.
+    pub fn is_starved(&self) -> bool {
+        self.fineness < self.asked
     }
 
-    /// Joins one grid cell to the next ones, and to the rim where its outline ends there.
-    fn join(&mut self, at: [usize; 2], lines: &[Vec<f64>; 2]) {
-        let plan = &self.cells.plan;
-        let node = at[1] * self.size[0] + at[0];
-        let low = [0, 1].map(|k| lines[k][at[k]]);
-        let high = [0, 1].map(|k| lines[k][at[k] + 1]);
-        let near = plan.near(low, high);
-        for axis in 0..2 {
-            let across = 1 - axis;
-            let face = |place: f64, on: &dyn Fn([f64; 2]) -> bool| {
-                let count = (0..SAMPLES)
-                    .filter(|index| {
-                        let mut point = [place; 2];
-                        point[across] = sample(low[across], high[across], *index);
-                        on(point)
-                    })
-                    .count();
-                (high[across] - low[across]) * count as f64 / f64::from(SAMPLES)
-            };
-            if at[axis] + 1 < self.size[axis] {
-                let distance = 0.5 * (lines[axis][at[axis] + 2] - low[axis]);
-                for plate in 0..2 {
-                    let width = face(high[axis], &|point| plan.on_plate(plate, (point, &near)));
-                    self.shape[node][axis][plate] = width / distance;
-                }
-            }
-            let half = 0.5 * (high[axis] - low[axis]);
-            for (place, last) in [
-                (low[axis], at[axis] == 0),
-                (high[axis], at[axis] + 1 == self.size[axis]),
-            ] {
-                let beyond = face(place, &|point| last || !plan.on_outline(1, point));
-                self.rim_shape[node] += beyond / half;
-            }
-        }
-    }
-
-    /// Brings sampled areas to the exact sums, and each bolt's pressure to its whole force.
-    fn settle(&mut self) {
-        let scaled = |areas: &mut Vec<f64>, exact: f64| {
-            let factor = exact / areas.iter().sum::<f64>();
-            for area in areas {
-                *area *= factor;
-            }
-        };
-        for plate in 0..2 {
-            scaled(
-                &mut self.columns.plate_area[plate],
-                self.cells.plate_area[plate],
-            );
-        }
-        scaled(&mut self.columns.source_area, self.cells.source_area);
-        scaled(&mut self.columns.patch_area, self.cells.interface_area);
-        self.patches
-            .restore(&self.columns.patch_area, self.head_area.len());
+    /// The same plan with cells twice as wide: what a comparison needs.
+    pub fn coarser(&self) -> Result<Self, Failure> {
+        within(&self.cells, 0.5 * self.fineness, f64::INFINITY)
     }
 
     /// The resistances under a load, with the heat free to choose its way through the plates.
     ///
     /// Contact, lower and upper bound are those of the cells.
     /// Checked: `round_joint_agrees_with_the_ring_network`, `plan_grid_meets_the_reference_cases`.
-    pub fn solve<H: Fn(f64) -> f64>(&self, load: &Load<H>) -> Path {
+    pub fn solve<H: Fn(f64) -> f64>(&self, load: &Load<H>) -> Result<Path, Failure> {
+        self.solve_both(load).map(|(path, _)| path)
+    }
+
+    /// The same with perfect contact for later use.
+    pub fn solve_both<H: Fn(f64) -> f64>(
+        &self,
+        load: &Load<H>,
+    ) -> Result<(Path, Perfect), Failure> {
         let conductance = self.conductance(load);
-        let met = vec![f64::INFINITY; conductance.len()];
-        let plates = self.cells.plates(load);
+        let conductivity = load.conductivity;
+        let plates = self.cells.plates(conductivity);
         // The two systems know nothing of each other, so both cores can have one.
         let (whole, perfect) = rayon::join(
             || self.whole(&plates, &conductance),
-            || self.whole(&plates, &met),
+            || self.perfect(conductivity),
         );
-        self.cells.path(load, &whole, &perfect)
+        let perfect = perfect?;
+        let path = self.cells.path(load, &whole?, &perfect.whole);
+        path.checked(GRID)?;
+        Ok((path, perfect))
+    }
+
+    /// The same where perfect contact is known already for these conductivities.
+    pub fn solve_beside<H: Fn(f64) -> f64>(
+        &self,
+        load: &Load<H>,
+        perfect: &Perfect,
+    ) -> Result<Path, Failure> {
+        let whole = self.whole(
+            &self.cells.plates(load.conductivity),
+            &self.conductance(load),
+        )?;
+        let path = self.cells.path(load, &whole, &perfect.whole);
+        path.checked(GRID)?;
+        Ok(path)
+    }
+
+    /// Both plates in perfect contact.
+    fn perfect(&self, conductivity: [f64; 2]) -> Result<Perfect, Failure> {
+        let met = vec![f64::INFINITY; self.columns.patch_area.len()];
+        Ok(Perfect {
+            conductivity,
+            whole: self.whole(&self.cells.plates(conductivity), &met)?,
+        })
     }
 
     /// Source to sink alone, K/W: what a comparison of two grids needs.
-    pub fn source_to_sink<H: Fn(f64) -> f64>(&self, load: &Load<H>) -> f64 {
-        let plates = self.cells.plates(load);
-        self.whole(&plates, &self.conductance(load)).source - self.cells.film_drop()
+    pub fn source_to_sink<H: Fn(f64) -> f64>(&self, load: &Load<H>) -> Result<f64, Failure> {
+        let plates = self.cells.plates(load.conductivity);
+        let whole = self.whole(&plates, &self.conductance(load))?;
+        Ok(whole.source - self.cells.film_drop())
     }
 
     fn conductance<H: Fn(f64) -> f64>(&self, load: &Load<H>) -> Vec<f64> {
@@ -339,12 +195,13 @@ impl PlanGrid {
         conductance
     }
 
-    fn whole(&self, plates: &Plates, conductance: &[f64]) -> Whole {
-        self.flow(plates, conductance)
-            .map_or(Whole::BLOCKED, |flow| self.cells.whole_of(&flow))
+    fn whole(&self, plates: &Plates, conductance: &[f64]) -> Result<Whole, Failure> {
+        let flow = self.flow(plates, conductance)?;
+        Ok(flow.map_or(Whole::BLOCKED, |flow| self.cells.whole_of(&flow)))
     }
 
-    fn flow(&self, plates: &Plates, conductance: &[f64]) -> Option<Flow> {
+    /// None when no path leads from one plate to the other.
+    fn flow(&self, plates: &Plates, conductance: &[f64]) -> Result<Option<Flow>, Failure> {
         let constants = plates.constants();
         let count = self.columns.count();
         let couplings: Vec<Coupling> = (0..count)
@@ -352,7 +209,7 @@ impl PlanGrid {
             .collect();
         let joined: f64 = couplings.iter().map(Coupling::total).sum();
         if joined <= 0.0 {
-            return None;
+            return Ok(None);
         }
         let mut sheets = Sheets::new(self.size[0], self.size[1]);
         let mut heat = vec![[0.0; 2]; count];
@@ -376,14 +233,27 @@ impl PlanGrid {
                 &couplings[node],
                 (&mut sheets.blocks[node], &mut heat[node]),
             );
-            for plate in 0..2 {
+            for (plate, heat) in heat[node].iter().enumerate() {
                 // Nothing of the plate is here, or it hangs on nothing: a node of its own.
                 if sheets.blocks[node][2 * plate] <= 0.0 {
                     sheets.blocks[node][2 * plate] = 1.0;
+                    if heat.abs() > 0.0 {
+                        return Err(Failure::NotFinite {
+                            network: GRID,
+                            reading: "heat into a place that hangs on nothing",
+                            value: *heat,
+                        });
+                    }
                 }
             }
         }
-        let temperatures = sheets.solution(&heat)?;
+        let temperatures = sheets
+            .solution(&heat)
+            .map_err(|stopped| Failure::NotSolved {
+                solver: SOLVER,
+                rounds: stopped.rounds,
+                residual: stopped.residual,
+            })?;
         let mut flow = Flow {
             hottest: f64::NEG_INFINITY,
             ..Flow::default()
@@ -393,7 +263,7 @@ impl PlanGrid {
                 .read(node, &constants, (&couplings[node], mean), &mut flow);
         }
         debug_assert!(plates.inlet != Inlet::Rim, "joints are heated on a face");
-        Some(flow)
+        Ok(Some(flow))
     }
 }
 

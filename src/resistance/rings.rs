@@ -1,12 +1,16 @@
 //! Rings of one cell and the patches of pressure on them.
 
-use std::f64::consts::TAU;
+use std::{collections::BTreeMap, f64::consts::TAU};
 
-use crate::resistance::{
-    cells::{Cell, Plan, View},
-    column::Columns,
-    network::{self, Rings},
-    region::outside_disc,
+use crate::{
+    pressure::Cone,
+    resistance::{
+        cells::{Cell, Plan, View},
+        column::Columns,
+        failure::Failure,
+        network::{self, Rings},
+        region::outside_disc,
+    },
 };
 
 /// Patches on a whole ring where several bolts press.
@@ -57,33 +61,54 @@ impl Patches {
     }
 }
 
-/// Every cell with its rings, and the share of its force that each bolt's field carries on the
-/// faying faces; the weights are already divided by it.
-pub(super) fn build(plan: &Plan, views: &[View], count: usize) -> (Vec<Cell>, Vec<f64>) {
-    let mut cells: Vec<Cell> = views
-        .iter()
-        .enumerate()
-        .map(|(bolt, view)| cell(plan, view, bolt, count))
-        .collect();
-    let mut carried = vec![0.0; views.len()];
-    for cell in &cells {
+/// Divides the weights by the share of its force that each bolt's field carries on the faying
+/// faces, and tells the shares.
+pub(super) fn restore(cells: &mut [Cell]) -> Result<Vec<f64>, Failure> {
+    let mut carried = vec![0.0; cells.len()];
+    for cell in cells.iter() {
         for (patch, area) in cell.rings.columns.patch_area.iter().enumerate() {
             for (bolt, weight) in cell.patches.of(patch) {
                 carried[*bolt] += area * weight;
             }
         }
     }
-    for cell in &mut cells {
+    let pressing = |share: &f64| share.is_finite() && *share > 0.0;
+    if let Some(bolt) = carried.iter().position(|share| !pressing(share)) {
+        return Err(Failure::NoContact {
+            bolt,
+            network: "its rings",
+        });
+    }
+    for cell in cells {
         for (bolt, weight) in &mut cell.patches.weights {
             *weight /= carried[*bolt];
         }
     }
-    for index in 1..cells.len() {
-        if let Some(first) = (0..index).find(|first| alike(&cells[*first], &cells[index])) {
-            cells[index].like = cells[first].like;
+    Ok(carried)
+}
+
+/// Marks each cell with the first one like it.
+///
+/// Cells that are alike have like areas, so only those of nearly the same area are compared.
+pub(super) fn pair_up(cells: &mut [Cell]) {
+    // A hundred rings may each differ by what `alike` allows.
+    const WINDOW: f64 = 1e-6;
+    let mut known: BTreeMap<u64, Vec<usize>> = BTreeMap::new();
+    for index in 0..cells.len() {
+        let area: f64 = cells[index].rings.columns.plate_area[0].iter().sum();
+        // The bits of positive numbers rise as the numbers do.
+        let [low, high] = [1.0 - WINDOW, 1.0 + WINDOW].map(|factor| (area * factor).to_bits());
+        let first = known
+            .range(low..=high)
+            .flat_map(|(_, cells)| cells)
+            .copied()
+            .filter(|first| alike(&cells[*first], &cells[index]))
+            .min();
+        match first {
+            Some(first) => cells[index].like = first,
+            None => known.entry(area.to_bits()).or_default().push(index),
         }
     }
-    (cells, carried)
 }
 
 /// Radii that bound the rings of one cell.
@@ -111,8 +136,9 @@ fn edges(plan: &Plan, view: &View, bolt: usize, count: usize) -> Vec<f64> {
     edges
 }
 
-fn cell(plan: &Plan, view: &View, bolt: usize, count: usize) -> Cell {
-    let edges = edges(plan, view, bolt, count);
+/// The rings of one bolt and the pressures on them.
+pub(super) fn cell(plan: &Plan, view: &View, bolt: usize) -> Cell {
+    let edges = edges(plan, view, bolt, plan.rings);
     let between = |area: &dyn Fn(f64) -> f64| -> Vec<f64> {
         let within: Vec<f64> = edges.iter().map(|radius| area(*radius)).collect();
         let least = NO_AREA * within.last().copied().unwrap_or(0.0);
@@ -124,8 +150,7 @@ fn cell(plan: &Plan, view: &View, bolt: usize, count: usize) -> Cell {
     };
     let plate_area = [0, 1].map(|k| between(&|radius| view.plates[k].area_within(radius)));
     let interface = between(&|radius| view.interface.area_within(radius));
-    let bearing = plan.sites[bolt].cone.bearing_radius;
-    let head = between(&|radius| view.interface.area_within(radius.min(bearing)));
+    let head = under_head(plan.sites[bolt].cone, view, &edges, &interface);
     let head_area: f64 = head.iter().sum();
     let holes = plan.sites[bolt].hole_radius;
     let [(shape1, rim1), (shape2, rim2)] =
@@ -160,11 +185,42 @@ fn cell(plan: &Plan, view: &View, bolt: usize, count: usize) -> Cell {
             .push(rings.columns.patch_area.len());
     }
     Cell {
-        head_share: head.iter().map(|area| area / head_area).collect(),
+        head_share: head
+            .iter()
+            .map(|area| area / head_area.max(f64::MIN_POSITIVE))
+            .collect(),
         edges,
         rings,
         patches,
         like: bolt,
+    }
+}
+
+/// Area under the head in each ring, m².
+///
+/// A head that covers nothing of the faying faces, over a wide hole, presses around it: the shank
+/// then joins the plates over the contact.
+fn under_head(cone: Cone, view: &View, edges: &[f64], interface: &[f64]) -> Vec<f64> {
+    let within = |outermost: f64| -> Vec<f64> {
+        let area = |radius: f64| view.interface.area_within(radius.min(outermost));
+        edges
+            .windows(2)
+            .zip(interface)
+            .map(|(pair, whole)| {
+                let part = area(pair[1]) - area(pair[0]);
+                if part > NO_AREA * whole {
+                    part.min(*whole)
+                } else {
+                    0.0
+                }
+            })
+            .collect()
+    };
+    let head = within(cone.bearing_radius);
+    if head.iter().sum::<f64>() > 0.0 {
+        head
+    } else {
+        within(cone.contact_radius)
     }
 }
 
@@ -208,17 +264,33 @@ impl Around<'_> {
             patches.push([own].into_iter());
             return;
         }
+        let mut alone = 0.0;
         for arc in arcs {
             let parts = (arc.sweep / TAU * PATCHES_PER_TURN).ceil().max(1.0);
             for part in 0..parts as usize {
                 let angle = arc.start + arc.sweep * (part as f64 + 0.5) / parts;
                 let point = [middle * angle.cos(), middle * angle.sin()];
-                areas.push(area * arc.sweep / parts / sweep);
-                patches.push([own].into_iter().chain(reaching.iter().map(|(other, to)| {
-                    let distance = (point[0] - to[0]).hypot(point[1] - to[1]);
-                    (*other, self.plan.sites[*other].cone.pressure(distance, 1.0))
-                })));
+                let part = area * arc.sweep / parts / sweep;
+                let mut weights = reaching
+                    .iter()
+                    .map(|(other, to)| {
+                        let distance = (point[0] - to[0]).hypot(point[1] - to[1]);
+                        (*other, self.plan.sites[*other].cone.pressure(distance, 1.0))
+                    })
+                    .filter(|(_, weight)| *weight > 0.0)
+                    .peekable();
+                if weights.peek().is_none() {
+                    alone += part;
+                    continue;
+                }
+                areas.push(part);
+                patches.push([own].into_iter().chain(weights));
             }
+        }
+        // What no neighbour presses is one patch.
+        if alone > 0.0 {
+            areas.push(alone);
+            patches.push([own].into_iter());
         }
     }
 

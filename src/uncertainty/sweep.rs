@@ -56,7 +56,7 @@ pub fn torque_sweep(joint: &Joint, options: &SweepOptions) -> Result<TorqueSweep
     }
     let points = (0..options.steps)
         .map(|step| from + (to - from) * step as f64 / (options.steps - 1) as f64)
-        .map(|torque| point(joint, options, (case, torque)))
+        .map(|torque| point(&chain, options, (case, torque)))
         .collect::<Result<Vec<TorquePoint>, Failure>>()?;
     let best = points
         .iter()
@@ -105,15 +105,11 @@ fn worst_case(chain: &Chain) -> Result<usize, Failure> {
 }
 
 fn point(
-    joint: &Joint,
+    stated: &Chain,
     options: &SweepOptions,
     (case, torque): (usize, f64),
 ) -> Result<TorquePoint, Failure> {
-    let mut changed = joint.clone();
-    if let Tightening::Torque(tightening) = &mut changed.fasteners[options.group].tightening {
-        tightening.torque = torque;
-    }
-    let chain = Chain::new(&changed)?;
+    let chain = stated.with_torque(options.group, torque)?;
     let nominal = chain.state(case, &estimate::Realisation::default())?;
     let path = &nominal.path;
     let (source_to_sink, contact, added) = (

@@ -91,6 +91,20 @@ pub(super) const ENTRIES: &[Entry] = &[
         ],
     ),
     Range.entry(
+        "resistance/grid-error",
+        "The plan grid is coarse for this joint",
+        [
+            "Lines of the plan grid run across the whole joint, and the number of its nodes is \
+             bounded so that an estimate takes seconds: thousands of bolts get a coarser grid than \
+             they should, which reads too high. Under a heated zone narrower than its plate is \
+             thick no grid helps, because plates are taken as sheets. The error told comes from \
+             grids with half of the lines.",
+            "Estimate a part of the joint that repeats, heated and cooled in proportion; a regular \
+             lattice needs one bolt with its share of both plates. Heat a wider zone, or solve the \
+             spreading under a small one by itself.",
+        ],
+    ),
+    Range.entry(
         "resistance/edge-sink",
         "Heat leaves at an edge",
         [

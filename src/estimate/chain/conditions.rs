@@ -1,0 +1,155 @@
+//! What heat meets in a joint at one realisation: forces, faces, conductivities.
+
+use crate::{
+    conductance::{Curve, Local},
+    estimate::{Chain, Failure, Realisation, surfaces},
+    joint::MeasuredKind,
+    resistance::Load,
+};
+
+/// Length of bolt in the head and in the nut through which heat enters and leaves, in diameters.
+///
+/// Source: the substitution lengths of VDI 2230 for stiffness, 0.5 d and 0.4 d, from memory; heat
+/// takes the same shape of path (judgement).
+const SHANK_ENDS: f64 = 0.9;
+
+/// What heat meets in a joint: forces, faces, conductivities.
+#[derive(Clone, Debug)]
+pub struct Conditions {
+    /// Clamp force of each bolt in service, N.
+    pub forces: Vec<f64>,
+    /// The faces: local conductance against pressure.
+    pub faces: Faces,
+    /// Conductivity of both plates, W/(m K).
+    pub conductivity: [f64; 2],
+    /// Conductance of each shank, W/K.
+    pub shanks: Vec<f64>,
+}
+
+impl Conditions {
+    /// The same as the networks take it.
+    pub fn load(&self) -> Load<'_, impl Fn(f64) -> f64> {
+        Load {
+            conductance: |pressure: f64| self.faces.conductance(pressure),
+            conductivity: self.conductivity,
+            forces: &self.forces,
+            shanks: &self.shanks,
+        }
+    }
+}
+
+/// The faces of a joint at one realisation.
+#[derive(Clone, Debug)]
+pub struct Faces {
+    /// The laws.
+    pub local: Local,
+    /// Measured W/K per bolt as conductance over pressure, W/(m² K Pa), where a force law is given.
+    pub per_pascal: Option<f64>,
+}
+
+impl Faces {
+    /// Local conductance at a pressure, W/(m² K); 0 Pa is the open gap.
+    pub fn conductance(&self, pressure: f64) -> f64 {
+        match self.per_pascal {
+            Some(factor) => factor * pressure + self.local.total(0.0),
+            None => self.local.total(pressure),
+        }
+    }
+
+    /// The same for many points up to a pressure, from a table of the law where it has no corner.
+    pub fn over_many_points(&self, highest_pressure: f64) -> impl Fn(f64) -> f64 {
+        let curve = match self.per_pascal {
+            Some(_) => None,
+            None => Curve::up_to(&self.local, highest_pressure),
+        };
+        move |pressure| match &curve {
+            Some(curve) => curve.total(pressure),
+            None => self.conductance(pressure),
+        }
+    }
+}
+
+impl Chain<'_> {
+    /// Forces, faces and conductivities of one case at one realisation: all that heat meets.
+    pub(super) fn conditions(&self, case: usize, at: &Realisation) -> Result<Conditions, Failure> {
+        let joint = self.joint();
+        let by_group: Vec<f64> = joint
+            .fasteners
+            .iter()
+            .zip(&self.groups)
+            .map(|(fastener, group)| group.service_force(joint, fastener, (case, at)))
+            .collect();
+        let forces: Vec<f64> = self.group_of.iter().map(|group| by_group[*group]).collect();
+        let temperature = joint.service.cases[case].temperature;
+        let interface = surfaces::interface(joint, case, at)?;
+        let per_pascal = self
+            .force_law(&forces, temperature)
+            .map(|law| law * interface.solid_factor);
+        Ok(Conditions {
+            forces,
+            faces: Faces {
+                local: interface.prepare(),
+                per_pascal,
+            },
+            conductivity: [
+                surfaces::conductivity(joint.warm(), temperature, at.conductivity[0])?,
+                surfaces::conductivity(joint.cold(), temperature, at.conductivity[1])?,
+            ],
+            shanks: self.shanks(temperature)?,
+        })
+    }
+
+    /// Measured W/K per bolt as a local conductance over pressure, W/(m² K Pa).
+    ///
+    /// ```text
+    /// h = p Σ G(F)/Σ F,   G = G₀ (F/F₀)ⁿ (T/T₀)ᵐ   so that ∫ h dA = Σ G, since ∫ p dA = Σ F
+    /// ```
+    fn force_law(&self, forces: &[f64], temperature: f64) -> Option<f64> {
+        let MeasuredKind::ForceLaw {
+            conductance,
+            force,
+            force_exponent,
+            temperature: reference,
+            temperature_exponent,
+        } = self.joint.measured.as_ref()?.kind
+        else {
+            return None;
+        };
+        let warmth = (temperature / reference).powf(temperature_exponent);
+        let whole: f64 = forces
+            .iter()
+            .map(|each| conductance * (each / force).powf(force_exponent) * warmth)
+            .sum();
+        let carried: f64 = forces.iter().sum();
+        Some(if carried > 0.0 { whole / carried } else { 0.0 })
+    }
+
+    /// Conductance of each bolt's shank from head to nut, W/K.
+    ///
+    /// ```text
+    /// G = k A_s/(l_K + 0.9 d)
+    /// ```
+    ///
+    /// The contacts under head and nut conduct far better than the shank and are left out.
+    fn shanks(&self, temperature: f64) -> Result<Vec<f64>, Failure> {
+        let by_group = self
+            .joint
+            .fasteners
+            .iter()
+            .zip(&self.groups)
+            .map(|(fastener, group)| {
+                if !fastener.shank_path {
+                    return Ok(0.0);
+                }
+                let conductivity = fastener
+                    .grade
+                    .conductivity_at(temperature)
+                    .map_err(|fault| Failure::Cold(fault.to_string()))?;
+                let thread = &fastener.thread;
+                let length = group.stack.grip + SHANK_ENDS * thread.diameter;
+                Ok(conductivity * thread.stress_area / length)
+            })
+            .collect::<Result<Vec<f64>, Failure>>()?;
+        Ok(self.group_of.iter().map(|group| by_group[*group]).collect())
+    }
+}
