@@ -2,6 +2,7 @@
 
 use std::{
     collections::BTreeSet,
+    fmt::Write,
     fs,
     path::{Path, PathBuf},
 };
@@ -104,7 +105,8 @@ cooled = {cooled}
 "#
     );
     for places in groups {
-        text.push_str(&format!(
+        let _ = write!(
+            text,
             r#"
 [[fastener]]
 thread = "M4"
@@ -114,7 +116,7 @@ torque = "1.7 N·m"
 engagement = {{ kind = "tapped", length = "6 mm" }}
 at = [{places}]
 "#
-        ));
+        );
     }
     let joint = joint::read(&text).expect("a good joint");
     let options = Options { draws: 0, seed: 1 };

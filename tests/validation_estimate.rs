@@ -34,8 +34,8 @@ fn round_joint_gives_the_known_ring_sum() {
     assert!((contact.nominal.recip() / 40.226 - 1.0).abs() < 5e-5);
 }
 
-/// The reference round joint by finite elements: case A_t1_ba1.6 of `axisym_public.json`, outer
-/// faces isothermal, resistance over 1/(k b) at two Biot numbers h(p_m) b/k, p_m the mean pressure
+/// The reference round joint by finite elements: case `A_t1_ba1.6` of `axisym_public.json`, outer
+/// faces isothermal, resistance over 1/(k b) at two Biot numbers `h(p_m) b/k`, `p_m` the mean pressure
 /// under the head. Each is good to 0.1 %.
 fn solved_round() -> (f64, Vec<(f64, f64)>) {
     let text = include_str!("data/axisym_public.json");
@@ -120,5 +120,36 @@ fn contact_only_never_stands_for_the_joint() {
         // The key fact of the trade on these two joints: a factor of a hundred.
         assert!(truth / contact > 90.0, "{file}: {contact}");
         assert!(results.added_by_joint.resistance.nominal > 50.0 * contact);
+    }
+}
+
+/// Source to sink of case i in air, K/W, solved in three dimensions with the gap that the bolts
+/// open, at clamp forces of each bolt in kN.
+const IN_AIR: [(&str, f64); 5] = [
+    ("1.25", 0.0946),
+    ("2.5", 0.1028),
+    ("5", 0.1174),
+    ("10", 0.1408),
+    ("15", 0.1589),
+];
+
+/// The cone knows no gap; its nominal stays where the gap grows, and the band must say so.
+#[test]
+fn bands_hold_the_solved_joint_in_air_at_every_force() {
+    let text = std::fs::read_to_string("tests/data/joints/case_i.toml").expect("the file is there");
+    for (force, truth) in IN_AIR {
+        let sets = [
+            "service.medium=air".to_owned(),
+            format!("fastener.preload={force} kN"),
+        ];
+        let joint = joint::read_with(&text, &sets).expect("a good joint");
+        let options = Options {
+            draws: 512,
+            seed: 1,
+        };
+        let found = uncertainty::estimate(&joint, &options).expect("a number");
+        let band = found.cases[0].results.source_to_sink.resistance;
+        let (low, high) = (band.low.expect("a low"), band.high.expect("a high"));
+        assert!(low < truth && truth < high, "{force} kN: {low} to {high}");
     }
 }

@@ -5,6 +5,8 @@ mod field;
 
 pub(super) use field::{FLATNESS_DECIDES, GAP_IGNORED};
 
+use field::GAS_MATTERS;
+
 use crate::{
     catalog,
     diagnostic::{Caution, registry},
@@ -151,7 +153,7 @@ fn service_cautions(chain: &Chain, cases: &[CaseResult]) -> Result<Vec<Caution>,
     let mut found = Vec::new();
     let gas_matters = !surfaces::bridged(joint) && joint.filler.is_none();
     match &joint.service.medium {
-        Medium::Gas { gas, .. } if gas_matters => {
+        Medium::Gas { gas, .. } if gas_matters && chain.gas_share()? > GAS_MATTERS => {
             found.extend(flatters(chain, &gas.name, cases)?);
         }
         Medium::Vacuum => found.extend(vacuum_materials(joint)),
@@ -187,10 +189,7 @@ fn flatters(chain: &Chain, gas: &str, cases: &[CaseResult]) -> Result<Option<Cau
     let Some(case) = cases.first() else {
         return Ok(None);
     };
-    let vacuum = chain
-        .in_vacuum()?
-        .state(0, &Realisation::default())?
-        .path;
+    let vacuum = chain.in_vacuum()?.state(0, &Realisation::default())?.path;
     let ratio = vacuum.added_by_joint / case.results.added_by_joint.resistance.nominal;
     Ok(Some(caution(
         "service/air-flatters-vacuum",

@@ -58,9 +58,14 @@ pub fn torque_sweep(joint: &Joint, options: &SweepOptions) -> Result<TorqueSweep
         .map(|step| from + (to - from) * step as f64 / (options.steps - 1) as f64)
         .map(|torque| point(&chain, options, (case, torque)))
         .collect::<Result<Vec<TorquePoint>, Failure>>()?;
+    let cautions = estimate::nominal(&chain, &options.chain)?.cautions;
+    // In gas the gap grows with the force, which this field does not know: no torque is the best.
+    let gap_unknown = cautions
+        .iter()
+        .any(|caution| caution.code == "pressure/gap-ignored");
     let best = points
         .iter()
-        .filter(|point| point.passes)
+        .filter(|point| point.passes && !gap_unknown)
         .min_by(|one, other| {
             let key = |point: &TorquePoint| point.source_to_sink.nominal;
             key(one).total_cmp(&key(other))
@@ -75,7 +80,7 @@ pub fn torque_sweep(joint: &Joint, options: &SweepOptions) -> Result<TorqueSweep
         points,
         required: required(joint),
         case: joint.service.cases[case].name,
-        cautions: estimate::nominal(&chain, &options.chain)?.cautions,
+        cautions,
     })
 }
 

@@ -15,17 +15,21 @@ use crate::{
 const ROUND_FORM: [f64; 2] = [0.85, 1.03];
 /// The same for the plan grid of several bolts in vacuum.
 ///
-/// On two joints solved in three dimensions it read what the joint adds 7 and 11 % high; a tapped
-/// far plate raised it by 5 %, rigid heads lowered it by 3 % (judgement on these).
+/// On two joints solved in three dimensions it read what the joint adds 7 and 11 % high; rigid
+/// heads lowered it by 3 % (judgement on these).
 const PLAN_FORM: [f64; 2] = [0.83, 1.05];
-/// Upper factor for bare faces in a gas: the cone knows no gap, and the true joint added 1.4 and
-/// 1.8 times as much on the same two joints.
-const OPEN_GAP: f64 = 1.8;
+/// Gap between the bolts over F L/(E t²) of the plate that gives most, for the upper factor in gas.
+///
+/// F is the clamp force of a bolt, L half the side of a bolt's share of the faces. Bending of the
+/// plates outside the contact makes the gap proportional to this; the mean gap of the same two
+/// joints was 0.086 and 0.055 of it, and 0.1 leaves room for the quantile (judgement).
+const GAP_SCALE: f64 = 0.1;
 /// Added to the upper factor where the far plate holds the thread: the cone stands for a head on
 /// both faces, and a tapped plate raised the resistance of the reference joints by 4 and 5 %.
 const TAPPED: f64 = 0.05;
 /// Upper factor for a filled joint, whose layer thickens where the plates part (judgement).
 const OPEN_LAYER: f64 = 1.2;
+
 impl Chain<'_> {
     /// Bounds of the model form: of the network, and of what the cone does not know.
     pub(super) fn form_bounds(&self) -> Result<Bounds, Failure> {
@@ -41,7 +45,7 @@ impl Chain<'_> {
         high = if self.joint.filler.is_some() {
             high.max(OPEN_LAYER)
         } else {
-            high + (OPEN_GAP - high) * self.gas_share()?
+            high + self.gas_share()? * self.gap_growth()?
         };
         Ok(Bounds {
             low,
@@ -50,9 +54,31 @@ impl Chain<'_> {
         })
     }
 
+    /// Gap between the bolts over the distance of the closed faces as the gas meets them, 1.
+    ///
+    /// ```text
+    /// δ/(Y + M),   δ = 0.1 max F L/(E t²)
+    /// ```
+    fn gap_growth(&self) -> Result<f64, Failure> {
+        let conditions = self.conditions(0, &Realisation::default())?;
+        let local = &conditions.faces.local;
+        let Some(gas) = local.interface().gas else {
+            return Ok(0.0);
+        };
+        let bolts = conditions.forces.len() as f64;
+        let force = conditions.forces.iter().sum::<f64>() / bolts;
+        let reach = 0.5 * (self.footprint() / bolts).sqrt();
+        let softest = [self.joint.warm(), self.joint.cold()]
+            .map(|plate| plate.material.youngs_modulus.value * plate.thickness.powi(2))
+            .into_iter()
+            .fold(f64::INFINITY, f64::min);
+        let gap = GAP_SCALE * force * reach / softest;
+        Ok(gap / (local.separation(0.0) + gas.parameter))
+    }
+
     /// Share of what the gas takes off the joint's resistance, by the cells: 0 in vacuum, near 1
     /// where the gas carries nearly all.
-    fn gas_share(&self) -> Result<f64, Failure> {
+    pub(in crate::estimate) fn gas_share(&self) -> Result<f64, Failure> {
         if matches!(self.joint.service.medium, Medium::Vacuum) {
             return Ok(0.0);
         }
