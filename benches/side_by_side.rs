@@ -90,11 +90,12 @@ fn main() {
 }
 
 fn ring_sum(rings: &Rings, cone: &Cone, law: &Curve, force: f64) -> f64 {
+    let ln_peak = (force * cone.peak_per_force).ln();
     rings
         .radius
         .iter()
         .zip(&rings.area)
-        .map(|(radius, area)| area * law.total(cone.pressure(*radius, force)))
+        .map(|(radius, area)| area * law.total_of_ln(ln_peak + cone.ln_shape(*radius)))
         .sum()
 }
 

@@ -67,14 +67,20 @@ impl Curve {
     /// Local conductance at a pressure, W/(m² K).
     #[inline]
     pub fn total(&self, pressure: f64) -> f64 {
-        let place = (pressure.ln() - self.start) * self.pieces_per_unit;
+        self.total_of_ln(pressure.ln())
+    }
+
+    /// The same from the natural logarithm of the pressure in Pa.
+    #[inline]
+    pub fn total_of_ln(&self, ln_pressure: f64) -> f64 {
+        let place = (ln_pressure - self.start) * self.pieces_per_unit;
         // Not a number and below the table both become 0 or less; the law answers for them.
         if place > 0.0
             && let Some(cubic) = self.pieces.get(place as usize)
         {
             return value(*cubic, place.fract());
         }
-        self.law.total(pressure)
+        self.law.total(ln_pressure.exp())
     }
 }
 
