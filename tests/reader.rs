@@ -669,7 +669,12 @@ fn a_file_of_six_bolts_reads_in_two_milliseconds() {
 }
 
 proptest! {
-    #![proptest_config(ProptestConfig::with_cases(300))]
+    #![proptest_config(ProptestConfig {
+        cases: 300,
+        rng_seed: proptest::test_runner::RngSeed::Fixed(1),
+        failure_persistence: None,
+        ..ProptestConfig::default()
+    })]
 
     #[test]
     fn no_text_makes_the_reader_panic(text in "\\PC*", set in "\\PC*") {

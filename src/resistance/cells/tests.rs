@@ -305,7 +305,7 @@ fn a_contact_over_the_edge_is_told_and_still_carries_its_force() {
 const STEP: f64 = 0.1e-3;
 
 proptest! {
-    #![proptest_config(ProptestConfig::with_cases(24))]
+    #![proptest_config(crate::fixed_cases(24))]
 
     #[test]
     fn pressure_carries_the_force_whatever_the_edges(

@@ -80,7 +80,7 @@ fn arcs_without_a_disc_lose_its_width() {
 const STEPS: u32 = 4000;
 
 proptest! {
-    #![proptest_config(ProptestConfig::with_cases(60))]
+    #![proptest_config(crate::fixed_cases(60))]
 
     #[test]
     fn area_grows_by_the_arcs(
