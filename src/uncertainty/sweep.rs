@@ -59,19 +59,15 @@ pub fn torque_sweep(joint: &Joint, options: &SweepOptions) -> Result<TorqueSweep
         .map(|torque| point(&chain, options, (case, torque)))
         .collect::<Result<Vec<TorquePoint>, Failure>>()?;
     let cautions = estimate::nominal(&chain, &options.chain)?.cautions;
-    // In gas the gap grows with the force, which this field does not know: no torque is the best.
-    let gap_unknown = cautions
-        .iter()
-        .any(|caution| caution.code == "pressure/gap-ignored");
     let best = points
         .iter()
-        .filter(|point| point.passes && !gap_unknown)
+        .filter(|point| point.passes)
         .min_by(|one, other| {
             let key = |point: &TorquePoint| point.source_to_sink.nominal;
             key(one).total_cmp(&key(other))
         })
         .map(|point| point.torque);
-    Ok(TorqueSweep {
+    let mut sweep = TorqueSweep {
         title: joint.title.clone(),
         group: estimate::group_label(group),
         stated,
@@ -81,7 +77,12 @@ pub fn torque_sweep(joint: &Joint, options: &SweepOptions) -> Result<TorqueSweep
         required: required(joint),
         case: joint.service.cases[case].name,
         cautions,
-    })
+    };
+    // In gas the gap grows with the force, which this field does not know: no torque is the best.
+    if sweep.gap_unknown() {
+        sweep.best = None;
+    }
+    Ok(sweep)
 }
 
 /// The case in which the joint stands worst: of most resistance, or of least where the requirement
