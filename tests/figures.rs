@@ -23,6 +23,7 @@ fn field() -> FieldMap {
         window: [0.0, 0.0, 0.06, 0.04],
         size: [24, 16],
         conductance: pressure.iter().map(|p| p / 1e3).collect(),
+        gap: None,
         pressure,
     }
 }

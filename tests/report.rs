@@ -50,6 +50,7 @@ fn case(name: &'static str, sink_temperature: f64) -> CaseResult {
             force: 14400.0,
             gap_max: None,
             gap_mean: None,
+            solved: None,
         },
         results: Results {
             contact: plane(0.004, 0.005, 0.0075),

@@ -181,6 +181,7 @@ impl<'a> Chain<'a> {
             force: self.geometry.cells.force_carried(&state.conditions.forces),
             gap_max: None,
             gap_mean: None,
+            solved: None,
         }
     }
 

@@ -19,6 +19,7 @@ pub fn field_map(chain: &Chain, columns: usize) -> Result<FieldMap, Failure> {
         size: [columns, rows],
         pressure: Vec::with_capacity(columns * rows),
         conductance: Vec::with_capacity(columns * rows),
+        gap: None,
     };
     for row in 0..rows {
         let y = lower + (upper - lower) * (row as f64 + 0.5) / rows as f64;

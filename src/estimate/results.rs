@@ -83,7 +83,7 @@ pub struct BoltResult {
 }
 
 /// The pressure between the faces at nominal force.
-#[derive(Clone, Copy, Debug, PartialEq)]
+#[derive(Clone, Debug, PartialEq)]
 pub struct PressureResult {
     /// Highest pressure, Pa.
     pub peak: f64,
@@ -97,6 +97,96 @@ pub struct PressureResult {
     pub gap_max: Option<f64>,
     /// Mean gap, m; the cone knows none.
     pub gap_mean: Option<f64>,
+    /// What only a solved field tells; none for the cone.
+    pub solved: Option<SolvedField>,
+}
+
+/// What an elastic field tells beyond pressure and gap.
+#[derive(Clone, Debug, PartialEq)]
+pub struct SolvedField {
+    /// Mean distance of the force from the nearest bolt axis, m.
+    pub mean_force_radius: f64,
+    /// Whether bow, map, sag and stated flatness close under the bolts.
+    pub flatness: Flatness,
+    /// What the cone says of the same joint; none where it cannot carry the joint.
+    pub cone: Option<ConeBeside>,
+    /// How well the solver did.
+    pub health: SolverHealth,
+}
+
+/// What becomes of faces that are not flat.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum Flatness {
+    /// Neither stated nor given: flat faces.
+    Flat,
+    /// A known shape: it is part of the nominal field.
+    Known {
+        /// Widest initial gap, m, lowest point of contact at zero.
+        initial: f64,
+        /// Widest gap under the bolts, m.
+        left: f64,
+        /// Widest gap of the same joint with flat faces, m.
+        flat: f64,
+    },
+    /// Only stated as a height: taken convex and concave for low and high.
+    Stated {
+        /// Both faces together, m.
+        height: f64,
+        /// Widest gap when the faces are convex (open at the edge) and concave, m.
+        left: [f64; 2],
+        /// Widest gap with flat faces, m.
+        flat: f64,
+    },
+}
+
+impl Flatness {
+    /// Share by which the widest gap may pass that of flat faces when a shape counts as closed.
+    const CLOSED: f64 = 0.25;
+
+    /// Whether the bolts close the shape: the gap left is hardly wider than that of flat faces.
+    ///
+    /// A quarter more than flat faces counts as closed (judgement: it moved the resistance of a
+    /// reference joint by 1 % in vacuum and 3 % in air).
+    pub fn closes(&self) -> Option<bool> {
+        let (left, flat) = match *self {
+            Self::Flat => return None,
+            Self::Known { left, flat, .. } => (left, flat),
+            Self::Stated { left, flat, .. } => (left[0].max(left[1]), flat),
+        };
+        Some(left <= (1.0 + Self::CLOSED) * flat)
+    }
+}
+
+/// The cone's answer for the same joint, at the same nominal inputs.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct ConeBeside {
+    /// Distance from the nearest bolt axis that holds 95 % of the force, m.
+    pub radius_95: f64,
+    /// Ring sum as a resistance, K/W.
+    pub contact: f64,
+    /// Source to sink, K/W.
+    pub source_to_sink: f64,
+}
+
+/// How a solver came to its field, and what is left.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct SolverHealth {
+    /// Unknown displacements.
+    pub unknowns: usize,
+    /// Steps of the contact search.
+    pub steps: usize,
+    /// Rounds of the linear solver, all steps together.
+    pub rounds: usize,
+    /// Force between the faces over clamp force, off from 1.
+    pub force_balance: f64,
+    /// Largest breach of "no pull, no overlap" over the peak pressure or the widest gap.
+    pub complementarity: f64,
+    /// Whether the energy fell in every step.
+    pub energy_fell: bool,
+    /// Residual of the last linear system over its load.
+    pub residual: f64,
+    /// Heat in over heat out, off from 1.
+    pub heat_balance: f64,
 }
 
 /// Temperature rises above the mean sink surface, K.
@@ -187,9 +277,9 @@ pub struct Estimate {
     pub seed: u64,
     /// Number of draws; 0 means nominal only.
     pub draws: u32,
-    /// The field: `cone`.
+    /// The field: `cone` or `elastic`.
     pub field: &'static str,
-    /// The resolution: `normal`.
+    /// The resolution: `fast`, `normal` or `fine`.
     pub resolution: &'static str,
     /// Name of the source plane.
     pub source_plane: String,
@@ -312,4 +402,6 @@ pub struct FieldMap {
     pub pressure: Vec<f64>,
     /// Local conductance, W/(m² K), likewise.
     pub conductance: Vec<f64>,
+    /// Gap between the faces, m, zero in contact, likewise; none for the cone, which knows none.
+    pub gap: Option<Vec<f64>>,
 }
