@@ -1,27 +1,26 @@
 //! A joint prepared for the chain, and one run through it.
 
 mod conditions;
+mod cone;
 mod form;
 mod geometry;
 mod levels;
 
 pub(super) use levels::error_caution;
 
-use std::{borrow::Cow, sync::Arc};
+use std::borrow::Cow;
 
 use conditions::Conditions;
-use form::with_form;
-use geometry::Geometry;
-use levels::Level;
+use cone::ConeModel;
 
 use crate::{
     diagnostic::Caution,
     estimate::{
-        Band, BoltResult, Failure, PressureResult, Realisation, Strength,
+        Band, BoltResult, Failure, PressureResult, Realisation, RingRow, Strength,
         forces::{self, Group},
     },
-    joint::{Bounds, Fastener, Joint, Medium, Tightening},
-    pressure::{Cone, Pair},
+    joint::{Fastener, Joint, Medium, Tightening},
+    pressure::Cone,
     resistance::{self, Cells, Path},
 };
 
@@ -32,12 +31,14 @@ pub struct Chain<'a> {
     groups: Vec<Group>,
     /// Group of each bolt.
     group_of: Vec<usize>,
-    /// Shared with the chains of other torques.
-    geometry: Arc<Geometry>,
-    /// What the plan grid makes of the cells' answer, for each case; none without a grid.
-    levels: Vec<Level>,
-    /// Model form, as a factor on what the joint adds.
-    form: Bounds,
+    model: Model,
+}
+
+/// What stands for the pressure between the faces and for the heat in the plates.
+#[derive(Clone, Debug)]
+enum Model {
+    /// Closed form and networks.
+    Cone(ConeModel),
 }
 
 /// One run through the chain.
@@ -47,6 +48,15 @@ pub struct State {
     pub conditions: Conditions,
     /// Resistances, model form applied.
     pub path: Path,
+}
+
+/// How the faces meet at a point.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Met {
+    /// Contact pressure, Pa.
+    pub pressure: f64,
+    /// Gap beside the contact, m; none where the field knows none.
+    pub gap: Option<f64>,
 }
 
 impl<'a> Chain<'a> {
@@ -63,22 +73,21 @@ impl<'a> Chain<'a> {
             .enumerate()
             .flat_map(|(index, fastener)| fastener.places.iter().map(move |_| index))
             .collect();
-        Self {
+        let mut chain = Self {
             joint: Cow::Borrowed(joint),
             groups,
             group_of,
-            geometry: Arc::new(Geometry::new(joint)?),
-            levels: Vec::new(),
-            form: Bounds::exact(1.0),
-        }
-        .levelled(&[])
+            model: Model::Cone(ConeModel::new(joint)?),
+        };
+        chain.model = chain.levelled()?;
+        Ok(chain)
     }
 
-    /// The chain with calibration and model form for its own forces and medium.
-    fn levelled(mut self, others: &[Level]) -> Result<Self, Failure> {
-        self.levels = self.levels(others)?;
-        self.form = self.form_bounds()?;
-        Ok(self)
+    /// The model brought to the forces and the medium of this chain.
+    fn levelled(&self) -> Result<Model, Failure> {
+        Ok(match &self.model {
+            Model::Cone(model) => Model::Cone(model.levelled(self)?),
+        })
     }
 
     /// The same joint with another torque on one group, N m; plates, cells and grid are shared.
@@ -101,15 +110,14 @@ impl<'a> Chain<'a> {
     fn with(&self, change: impl FnOnce(&mut Joint)) -> Result<Chain<'static>, Failure> {
         let mut joint = self.joint().clone();
         change(&mut joint);
-        Chain {
+        let mut chain = Chain {
             joint: Cow::Owned(joint),
             groups: self.groups.clone(),
             group_of: self.group_of.clone(),
-            geometry: self.geometry.clone(),
-            levels: Vec::new(),
-            form: Bounds::exact(1.0),
-        }
-        .levelled(&self.levels)
+            model: self.model.clone(),
+        };
+        chain.model = chain.levelled()?;
+        Ok(chain)
     }
 
     /// The joint.
@@ -117,20 +125,19 @@ impl<'a> Chain<'a> {
         &self.joint
     }
 
-    /// The cells of the bolts.
-    pub fn cells(&self) -> &Cells {
-        &self.geometry.cells
+    /// The cells of the bolts; the closed-form field alone has them.
+    pub fn cells(&self) -> Option<&Cells> {
+        match &self.model {
+            Model::Cone(model) => Some(model.cells()),
+        }
     }
 
     /// Runs one case through the chain at one realisation.
     pub fn state(&self, case: usize, at: &Realisation) -> Result<State, Failure> {
         let conditions = self.conditions(case, at)?;
-        let solved = self.geometry.cells.solve(&conditions.load());
-        let path = match self.levels.get(case) {
-            Some(level) => level.calibration.applied(solved),
-            None => solved,
+        let path = match &self.model {
+            Model::Cone(model) => model.path(case, &conditions, at),
         };
-        let path = with_form(path, self.form.at(at.field));
         self.check(case, &path)?;
         Ok(State { conditions, path })
     }
@@ -141,7 +148,7 @@ impl<'a> Chain<'a> {
     }
 
     /// A failure of the networks in one case.
-    fn network(&self, case: usize, found: resistance::Failure) -> Failure {
+    pub(super) fn network(&self, case: usize, found: resistance::Failure) -> Failure {
         Failure::Network {
             case: self.joint.service.cases[case].name,
             found,
@@ -162,7 +169,9 @@ impl<'a> Chain<'a> {
                     force_in_service: group.service_band(self.joint(), fastener, case),
                     strength_use: strength.equivalent,
                     largest_torque: strength.largest_torque.map(|(torque, _)| torque),
-                    contact_radius: self.geometry.cones[bolt].contact_radius,
+                    contact_radius: match &self.model {
+                        Model::Cone(model) => model.cones()[bolt].contact_radius,
+                    },
                     contact_conductance: state.path.contact_per_bolt[bolt],
                 }
             })
@@ -171,23 +180,43 @@ impl<'a> Chain<'a> {
 
     /// The pressure field of a state.
     pub fn pressure(&self, state: &State) -> PressureResult {
-        PressureResult {
-            peak: self.geometry.cells.peak_pressure(&state.conditions.forces),
-            contact_area: self.geometry.cells.contact_area(),
-            radius_95: self
-                .geometry
-                .cells
-                .radius_holding(0.95, &state.conditions.forces),
-            force: self.geometry.cells.force_carried(&state.conditions.forces),
-            gap_max: None,
-            gap_mean: None,
-            solved: None,
+        match &self.model {
+            Model::Cone(model) => model.pressure(&state.conditions.forces),
+        }
+    }
+
+    /// Whether the field knows the gap beside the contact.
+    pub fn knows_the_gap(&self) -> bool {
+        match &self.model {
+            Model::Cone(_) => false,
+        }
+    }
+
+    /// How the faces meet at a point in joint coordinates; none off the faying faces or in a hole.
+    pub fn met_at(&self, point: [f64; 2], state: &State) -> Option<Met> {
+        match &self.model {
+            Model::Cone(model) => {
+                let pressure = model.cells().pressure_at(point, &state.conditions.forces)?;
+                Some(Met {
+                    pressure,
+                    gap: None,
+                })
+            }
+        }
+    }
+
+    /// The rings around one bolt, from the hole outward.
+    pub fn rings(&self, bolt: usize, state: &State) -> Vec<RingRow> {
+        match &self.model {
+            Model::Cone(model) => model.cells().rings(&state.conditions.load(), bolt),
         }
     }
 
     /// Area of the faying faces, m².
     pub fn footprint(&self) -> f64 {
-        self.geometry.cells.interface_area
+        match &self.model {
+            Model::Cone(model) => model.cells().interface_area,
+        }
     }
 
     /// Largest torque of a group, N m, and the limit that ends it.
@@ -212,17 +241,31 @@ impl<'a> Chain<'a> {
 
     /// Cautions of the closed-form field that do not depend on the force.
     pub(super) fn field_cautions(&self) -> Vec<Caution> {
-        let mut found: Vec<Caution> = Vec::new();
-        for caution in self.geometry.pairs.iter().filter_map(Pair::caution) {
-            if !found.contains(&caution) {
-                found.push(caution);
-            }
+        match &self.model {
+            Model::Cone(model) => model.cautions(),
         }
-        found
     }
 
-    /// The cones of the bolts.
+    /// The cones of the bolts; the closed-form field alone has them.
     pub fn cones(&self) -> &[Cone] {
-        &self.geometry.cones
+        match &self.model {
+            Model::Cone(model) => model.cones(),
+        }
+    }
+
+    /// Error of the discretisation at the nominal state of the first case, relative to source to
+    /// sink.
+    pub fn discretisation_error(&self, state: &State) -> Result<f64, Failure> {
+        match &self.model {
+            Model::Cone(model) => model.discretisation_error(self, state),
+        }
+    }
+
+    /// Share of what the gas takes off the joint's resistance: 0 in vacuum, near 1 where the gas
+    /// carries nearly all.
+    pub(in crate::estimate) fn gas_share(&self) -> Result<f64, Failure> {
+        match &self.model {
+            Model::Cone(model) => model.gas_share(self),
+        }
     }
 }

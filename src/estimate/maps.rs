@@ -5,7 +5,7 @@ use crate::{
     joint::{Joint, Outline, Plate},
 };
 
-/// Pressure and local conductance over the window of both plates, `columns` points wide.
+/// Pressure, gap and local conductance over the window of both plates, `columns` points wide.
 pub fn field_map(chain: &Chain, columns: usize) -> Result<FieldMap, Failure> {
     let state = chain.state(0, &Realisation::default())?;
     let peak = chain.pressure(&state).peak;
@@ -19,15 +19,24 @@ pub fn field_map(chain: &Chain, columns: usize) -> Result<FieldMap, Failure> {
         size: [columns, rows],
         pressure: Vec::with_capacity(columns * rows),
         conductance: Vec::with_capacity(columns * rows),
-        gap: None,
+        gap: chain
+            .knows_the_gap()
+            .then(|| Vec::with_capacity(columns * rows)),
     };
     for row in 0..rows {
         let y = lower + (upper - lower) * (row as f64 + 0.5) / rows as f64;
         for column in 0..columns {
             let x = left + (column as f64 + 0.5) * step;
-            let pressure = chain.cells().pressure_at([x, y], &state.conditions.forces);
-            map.pressure.push(pressure.unwrap_or(f64::NAN));
-            map.conductance.push(pressure.map_or(f64::NAN, &faces));
+            let met = chain.met_at([x, y], &state);
+            map.pressure.push(met.map_or(f64::NAN, |met| met.pressure));
+            map.conductance
+                .push(met.map_or(f64::NAN, |met| match met.gap {
+                    Some(gap) if gap > 0.0 => state.conditions.faces.local.parted(gap),
+                    _ => faces(met.pressure),
+                }));
+            if let Some(gaps) = &mut map.gap {
+                gaps.push(met.and_then(|met| met.gap).unwrap_or(f64::NAN));
+            }
         }
     }
     Ok(map)
@@ -36,9 +45,8 @@ pub fn field_map(chain: &Chain, columns: usize) -> Result<FieldMap, Failure> {
 /// The rings around every bolt, in file order.
 pub fn ring_tables(chain: &Chain) -> Result<Vec<Vec<RingRow>>, Failure> {
     let state = chain.state(0, &Realisation::default())?;
-    let load = state.conditions.load();
     Ok((0..state.conditions.forces.len())
-        .map(|bolt| chain.cells().rings(&load, bolt))
+        .map(|bolt| chain.rings(bolt, &state))
         .collect())
 }
 

@@ -5,6 +5,7 @@ use crate::{
     diagnostic::Caution,
     estimate::{Chain, cautions::caution, group_label},
     joint::{Engagement, Fastener, FillerKind, Joint, Medium, Zone},
+    resistance::Cells,
 };
 
 /// Nearest neighbours farther apart than this many thicknesses of the thinner plate let it part
@@ -13,7 +14,36 @@ const WIDE_PITCH: f64 = 12.0;
 
 pub(super) fn field_cautions(chain: &Chain) -> Vec<Caution> {
     let joint = chain.joint();
-    let cells = chain.cells();
+    let mut found = match chain.cells() {
+        Some(cells) => cone_cautions(chain, cells),
+        None => Vec::new(),
+    };
+    found.extend(small_source(joint));
+    let thinnest = joint
+        .plates
+        .iter()
+        .map(|plate| plate.thickness)
+        .fold(f64::INFINITY, f64::min);
+    if let Some(pitch) = widest_pitch(joint).filter(|pitch| *pitch > WIDE_PITCH * thinnest) {
+        found.push(caution(
+            "pressure/thin-plate-wide-pitch",
+            format!(
+                "bolts stand up to {:.0} mm apart on a {:.2} mm plate: between them the plates part, and heat must \
+                 travel along them",
+                pitch * 1e3,
+                thinnest * 1e3
+            ),
+        ));
+    }
+    for (fastener, _) in chain.groups() {
+        found.extend(seat_cautions(fastener));
+    }
+    found
+}
+
+/// What the closed form does not know of this joint.
+fn cone_cautions(chain: &Chain, cells: &Cells) -> Vec<Caution> {
+    let joint = chain.joint();
     let mut found = chain.field_cautions();
     let cut = cells.cut_share.iter().copied().fold(0.0, f64::max);
     if cut > 0.0 {
@@ -68,30 +98,14 @@ pub(super) fn field_cautions(chain: &Chain) -> Vec<Caution> {
              at the bolts and some between them",
         ));
     }
-    found.extend(small_source(joint));
-    let thinnest = joint
-        .plates
-        .iter()
-        .map(|plate| plate.thickness)
-        .fold(f64::INFINITY, f64::min);
-    if let Some(pitch) = widest_pitch(joint).filter(|pitch| *pitch > WIDE_PITCH * thinnest) {
-        found.push(caution(
-            "pressure/thin-plate-wide-pitch",
-            format!(
-                "bolts stand up to {:.0} mm apart on a {:.2} mm plate: between them the plates part, and heat must \
-                 travel along them",
-                pitch * 1e3,
-                thinnest * 1e3
-            ),
-        ));
-    }
     for (fastener, _) in chain.groups() {
-        found.extend(seat_cautions(fastener));
+        found.extend(cone_seat_cautions(fastener));
     }
     found
 }
 
-fn seat_cautions(fastener: &Fastener) -> Vec<Caution> {
+/// Seats as the closed form stands for them.
+fn cone_seat_cautions(fastener: &Fastener) -> Vec<Caution> {
     let name = group_label(fastener);
     let mut found = Vec::new();
     match (fastener.engagement, fastener.nut_seat) {
@@ -118,6 +132,12 @@ fn seat_cautions(fastener: &Fastener) -> Vec<Caution> {
         )),
         (Engagement::Nut, None) => {}
     }
+    found
+}
+
+fn seat_cautions(fastener: &Fastener) -> Vec<Caution> {
+    let name = group_label(fastener);
+    let mut found = Vec::new();
     if fastener.conical_seat {
         found.push(caution(
             "pressure/conical-seat",

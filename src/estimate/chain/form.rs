@@ -1,7 +1,7 @@
 //! Bounds of the model form, and what they do to a path.
 
 use crate::{
-    estimate::{Chain, Failure, Realisation},
+    estimate::{Chain, Failure, Realisation, chain::cone::ConeModel},
     joint::{Bounds, Engagement, Fastener, Medium},
     resistance::Path,
 };
@@ -30,22 +30,22 @@ const TAPPED: f64 = 0.05;
 /// Upper factor for a filled joint, whose layer thickens where the plates part (judgement).
 const OPEN_LAYER: f64 = 1.2;
 
-impl Chain<'_> {
+impl ConeModel {
     /// Bounds of the model form: of the network, and of what the cone does not know.
-    pub(super) fn form_bounds(&self) -> Result<Bounds, Failure> {
+    pub(super) fn form_bounds(&self, chain: &Chain) -> Result<Bounds, Failure> {
         let [low, mut high] = if self.geometry.grid.is_none() {
             ROUND_FORM
         } else {
             PLAN_FORM
         };
         let tapped = |group: &Fastener| !matches!(group.engagement, Engagement::Nut);
-        if self.joint.fasteners.iter().any(tapped) {
+        if chain.joint().fasteners.iter().any(tapped) {
             high += TAPPED;
         }
-        high = if self.joint.filler.is_some() {
+        high = if chain.joint().filler.is_some() {
             high.max(OPEN_LAYER)
         } else {
-            high + self.gas_share()? * self.gap_growth()?
+            high + self.gas_share(chain)? * Self::gap_growth(chain)?
         };
         Ok(Bounds {
             low,
@@ -59,16 +59,16 @@ impl Chain<'_> {
     /// ```text
     /// δ/(Y + M),   δ = 0.1 max F L/(E t²)
     /// ```
-    fn gap_growth(&self) -> Result<f64, Failure> {
-        let conditions = self.conditions(0, &Realisation::default())?;
+    fn gap_growth(chain: &Chain) -> Result<f64, Failure> {
+        let conditions = chain.conditions(0, &Realisation::default())?;
         let local = &conditions.faces.local;
         let Some(gas) = local.interface().gas else {
             return Ok(0.0);
         };
         let bolts = conditions.forces.len() as f64;
         let force = conditions.forces.iter().sum::<f64>() / bolts;
-        let reach = 0.5 * (self.footprint() / bolts).sqrt();
-        let softest = [self.joint.warm(), self.joint.cold()]
+        let reach = 0.5 * (chain.footprint() / bolts).sqrt();
+        let softest = [chain.joint().warm(), chain.joint().cold()]
             .map(|plate| plate.material.youngs_modulus.value * plate.thickness.powi(2))
             .into_iter()
             .fold(f64::INFINITY, f64::min);
@@ -78,11 +78,11 @@ impl Chain<'_> {
 
     /// Share of what the gas takes off the joint's resistance, by the cells: 0 in vacuum, near 1
     /// where the gas carries nearly all.
-    pub(in crate::estimate) fn gas_share(&self) -> Result<f64, Failure> {
-        if matches!(self.joint.service.medium, Medium::Vacuum) {
+    pub(super) fn gas_share(&self, chain: &Chain) -> Result<f64, Failure> {
+        if matches!(chain.joint().service.medium, Medium::Vacuum) {
             return Ok(0.0);
         }
-        let mut conditions = self.conditions(0, &Realisation::default())?;
+        let mut conditions = chain.conditions(0, &Realisation::default())?;
         let filled = self.geometry.cells.solve(&conditions.load()).added_by_joint;
         let mut interface = conditions.faces.local.interface().clone();
         interface.gas = None;

@@ -2,7 +2,7 @@
 
 use crate::{
     diagnostic::Caution,
-    estimate::{Chain, Failure, Realisation, State},
+    estimate::{Chain, Failure, Realisation, State, chain::cone::ConeModel},
     resistance::{self, Calibration, Perfect},
 };
 
@@ -21,19 +21,23 @@ pub(super) struct Level {
     pub(super) calibration: Calibration,
 }
 
-impl Chain<'_> {
+impl ConeModel {
     /// Holds the cells against the plan grid at the nominal inputs of each case.
     ///
     /// A case whose plates conduct as those of an earlier one takes its calibration: what is left
     /// between them, force and faces, the cells follow by themselves. Perfect contact knows neither
     /// force nor face, so the levels of another torque or medium still serve for it.
-    pub(super) fn levels(&self, others: &[Level]) -> Result<Vec<Level>, Failure> {
+    pub(super) fn calibrated(
+        &self,
+        chain: &Chain,
+        others: &[Level],
+    ) -> Result<Vec<Level>, Failure> {
         let mut known: Vec<Level> = Vec::new();
         let Some(grid) = &self.geometry.grid else {
             return Ok(known);
         };
-        for case in 0..self.joint.service.cases.len() {
-            let nominal = self.conditions(case, &Realisation::default())?;
+        for case in 0..chain.joint().service.cases.len() {
+            let nominal = chain.conditions(case, &Realisation::default())?;
             let alike = known.iter().find(|level| {
                 level
                     .conductivity
@@ -45,7 +49,7 @@ impl Chain<'_> {
                 known.push(level);
                 continue;
             }
-            let failed = |found| self.network(case, found);
+            let failed = |found| chain.network(case, found);
             let load = nominal.load();
             let cells = self.geometry.cells.solve(&load);
             let there = others
@@ -72,9 +76,13 @@ impl Chain<'_> {
     /// a third of the difference is left (six-bolt demo: 1.5 % against 1.3 % to a grid three times
     /// as fine). Where so many bolts stand that the grid is coarser than it should be, the order is
     /// not to be relied on: the whole difference is told, or what a lattice of these bolts tells.
-    pub fn discretisation_error(&self, state: &State) -> Result<f64, Failure> {
+    pub(super) fn discretisation_error(
+        &self,
+        chain: &Chain,
+        state: &State,
+    ) -> Result<f64, Failure> {
         let load = state.conditions.load();
-        let failed = |found| self.network(0, found);
+        let failed = |found| chain.network(0, found);
         let error = match &self.geometry.grid {
             None => self.geometry.cells.ring_error(&load).map_err(failed)? / 3.0,
             Some(grid) => {
