@@ -7,6 +7,7 @@ mod draw;
 mod drawings;
 mod estimate;
 mod explain;
+mod field;
 mod hidden;
 mod input;
 mod list;

@@ -2,12 +2,14 @@
 
 mod cautions;
 mod chain;
+mod choice;
 mod forces;
 mod maps;
 mod results;
 mod surfaces;
 
 pub use chain::{Chain, State};
+pub use choice::{Choice, Fineness, Watch};
 pub use forces::Strength;
 pub use maps::{field_map, ring_tables};
 pub use results::*;
@@ -59,6 +61,8 @@ pub struct Realisation {
     pub gas: f64,
     /// Form of the pressure field and of the spreading model, place.
     pub field: f64,
+    /// Out-of-flatness that is stated as a height alone, place: −1 convex, +1 concave.
+    pub flatness: f64,
 }
 
 /// Why a chain gave no number.
@@ -136,8 +140,8 @@ pub fn nominal(chain: &Chain, options: &Options) -> Result<Estimate, Failure> {
         title: joint.title.clone(),
         seed: options.seed,
         draws: options.draws,
-        field: "cone",
-        resolution: "normal",
+        field: chain.field_name(),
+        resolution: chain.resolution_name(),
         source_plane,
         sink_plane,
         heat: joint.service.heat,

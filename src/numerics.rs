@@ -12,3 +12,4 @@ pub mod quadrature;
 pub mod roots;
 pub mod sampling;
 pub mod special;
+pub mod surface;

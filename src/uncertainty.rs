@@ -8,7 +8,7 @@ mod inputs;
 mod sweep;
 
 pub use inputs::{Input, inputs};
-pub use sweep::{SweepOptions, torque_sweep};
+pub use sweep::{SweepOptions, sweep_along, torque_sweep};
 
 use rayon::prelude::*;
 
@@ -68,7 +68,7 @@ pub(crate) struct Draws {
 
 /// Draws whole joints; the order of the draws, not of the threads, orders the outcome.
 pub(crate) fn draws(chain: &Chain, case: usize, options: &Options) -> Result<Draws, Failure> {
-    let inputs = inputs(chain.joint());
+    let inputs = inputs(chain);
     let sobol = Sobol::new(inputs.len(), options.seed);
     let drawn = (0..options.draws)
         .into_par_iter()

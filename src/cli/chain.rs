@@ -1,5 +1,7 @@
 //! The one place where commands meet the chain: reading a joint, estimating it, drawing it.
 
+pub use crate::estimate::{Choice, Fineness, Watch};
+
 use crate::{
     cli::console::Trouble,
     diagnostic,
@@ -10,38 +12,70 @@ use crate::{
     units::{self, Quantity},
 };
 
+/// A joint, the field it is to stand on, and who is told while it is solved.
+#[derive(Clone, Debug)]
+pub struct Task<'a> {
+    /// The joint.
+    pub joint: &'a Joint,
+    /// The field.
+    pub choice: Choice,
+    /// Whom to tell.
+    pub watch: Watch,
+}
+
+impl<'a> Task<'a> {
+    fn chain(&self) -> Result<Chain<'a>, Trouble> {
+        let chain = Chain::of(self.joint, self.choice, &self.watch);
+        self.watch.tell("");
+        Ok(chain?)
+    }
+
+    /// Does the work and ends the telling.
+    fn watched<T>(&self, work: impl FnOnce() -> Result<T, Failure>) -> Result<T, Trouble> {
+        let done = work();
+        self.watch.tell("");
+        Ok(done?)
+    }
+}
+
 /// Low, nominal and high of a joint.
-pub fn estimate(joint: &Joint, options: &Options) -> Result<Estimate, Trouble> {
-    Ok(uncertainty::estimate(joint, options)?)
+pub fn estimate(task: &Task, options: &Options) -> Result<Estimate, Trouble> {
+    let chain = task.chain()?;
+    task.watched(|| uncertainty::along(&chain, options))
 }
 
 /// The torque of one group swept.
-pub fn torque_sweep(joint: &Joint, options: &SweepOptions) -> Result<TorqueSweep, Trouble> {
-    Ok(uncertainty::torque_sweep(joint, options)?)
+pub fn torque_sweep(task: &Task, options: &SweepOptions) -> Result<TorqueSweep, Trouble> {
+    let chain = task.chain()?;
+    task.watched(|| uncertainty::sweep_along(&chain, options))
 }
 
 /// An estimate with the rings of every bolt.
 pub fn with_rings(
-    joint: &Joint,
+    task: &Task,
     options: &Options,
 ) -> Result<(Estimate, Vec<Vec<RingRow>>), Trouble> {
-    let chain = Chain::new(joint)?;
-    let found = uncertainty::along(&chain, options)?;
-    Ok((found, estimate::ring_tables(&chain)?))
+    let chain = task.chain()?;
+    task.watched(|| {
+        let found = uncertainty::along(&chain, options)?;
+        Ok((found, estimate::ring_tables(&chain)?))
+    })
 }
 
 /// What the figures show: nominal results, fields over the plan, rings of every bolt.
 pub fn fields(
-    joint: &Joint,
+    task: &Task,
     columns: usize,
 ) -> Result<(Estimate, FieldMap, Vec<Vec<RingRow>>), Trouble> {
-    let chain = Chain::new(joint)?;
-    let nominal = uncertainty::along(&chain, &Options { draws: 0, seed: 1 })?;
-    Ok((
-        nominal,
-        estimate::field_map(&chain, columns)?,
-        estimate::ring_tables(&chain)?,
-    ))
+    let chain = task.chain()?;
+    task.watched(|| {
+        let nominal = uncertainty::along(&chain, &Options { draws: 0, seed: 1 })?;
+        Ok((
+            nominal,
+            estimate::field_map(&chain, columns)?,
+            estimate::ring_tables(&chain)?,
+        ))
+    })
 }
 
 impl From<Failure> for Trouble {

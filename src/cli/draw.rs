@@ -2,9 +2,11 @@
 
 use crate::{
     cli::{
-        chain, check,
+        chain::{self, Task},
+        check,
         console::{Console, Outcome, Trouble},
         drawings,
+        field::{self, Field},
         output::{Existing, Target},
     },
     figures::Format,
@@ -35,6 +37,8 @@ pub struct Draw {
         hide_possible_values = true
     )]
     format: Formats,
+    #[command(flatten)]
+    field: Field,
     /// Override a field: --set 'plate.box.thickness="6 mm"'
     #[arg(long = "set", value_name = "KEY=VALUE")]
     sets: Vec<String>,
@@ -78,7 +82,12 @@ impl Draw {
         }
         let (_, joint) =
             check::read(&self.file, &self.sets, console).map_err(|refused| refused.trouble())?;
-        let (nominal, field, rings) = chain::fields(&joint, COLUMNS)?;
+        let task = Task {
+            joint: &joint,
+            choice: self.field.choice()?,
+            watch: field::watch(),
+        };
+        let (nominal, field, rings) = chain::fields(&task, COLUMNS)?;
         let mut files = Vec::new();
         for (name, drawing) in drawings::of_joint(&joint, &nominal, (&field, &rings)) {
             for format in formats {

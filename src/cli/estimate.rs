@@ -2,8 +2,10 @@
 
 use crate::{
     cli::{
-        chain, check,
+        chain::{self, Task},
+        check,
         console::{Console, Layout, Outcome, Trouble},
+        field::{self, Field},
         input,
     },
     estimate::{self, Options, RingRow},
@@ -32,9 +34,8 @@ pub struct Estimate {
     /// Joint files; - reads standard input
     #[arg(required = true, value_name = "FILE")]
     files: Vec<PathBuf>,
-    /// Pressure field between the faces: cone
-    #[arg(long, value_name = "FIELD", default_value = "cone", value_parser = field)]
-    field: String,
+    #[command(flatten)]
+    field: Field,
     #[command(flatten)]
     draws: Draws,
     /// Override a field: --set 'plate.box.thickness="6 mm"'
@@ -94,15 +95,6 @@ fn draws(text: &str) -> Result<u32, String> {
     }
 }
 
-/// The fields of this build.
-fn field(name: &str) -> Result<String, String> {
-    match name {
-        "cone" => Ok(name.to_owned()),
-        "elastic" => Err("this build has no elastic field; it has `cone`".to_owned()),
-        _ => Err("this build has the field `cone`".to_owned()),
-    }
-}
-
 impl Estimate {
     /// Estimates every file, also after one at fault.
     pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
@@ -137,10 +129,15 @@ impl Estimate {
             }
         };
         let options = self.draws.options();
+        let task = Task {
+            joint: &joint,
+            choice: self.field.choice()?,
+            watch: field::watch(),
+        };
         let found = if self.rings {
-            chain::with_rings(&joint, &options)
+            chain::with_rings(&task, &options)
         } else {
-            chain::estimate(&joint, &options).map(|estimate| (estimate, Vec::new()))
+            chain::estimate(&task, &options).map(|estimate| (estimate, Vec::new()))
         };
         match found {
             Ok((estimate, rings)) => {

@@ -2,9 +2,11 @@
 
 use crate::{
     cli::{
-        chain, check,
+        chain::{self, Task},
+        check,
         console::{Console, Layout, Outcome, Trouble},
         estimate::Draws,
+        field::{self, Field},
         output::{Existing, Target},
     },
     figures::{Drawing, Format},
@@ -33,6 +35,8 @@ pub struct Torque {
     #[arg(long, value_name = "N", default_value_t = 1,
           value_parser = clap::value_parser!(u32).range(1..))]
     group: u32,
+    #[command(flatten)]
+    field: Field,
     #[command(flatten)]
     draws: Draws,
     /// Override a field: --set 'plate.box.thickness="6 mm"'
@@ -86,7 +90,12 @@ impl Torque {
             steps: self.steps as usize,
             chain: self.draws.options(),
         };
-        let found = chain::torque_sweep(&joint, &options)?;
+        let task = Task {
+            joint: &joint,
+            choice: self.field.choice()?,
+            watch: field::watch(),
+        };
+        let found = chain::torque_sweep(&task, &options)?;
         if let Some((format, target)) = figure {
             target.write(&chain::render(&Drawing::Torque(found.clone()), format)?)?;
             console.message(&format!("wrote {}\n", target.path.display()));

@@ -16,7 +16,8 @@ use cone::ConeModel;
 use crate::{
     diagnostic::Caution,
     estimate::{
-        Band, BoltResult, Failure, PressureResult, Realisation, RingRow, Strength,
+        Band, BoltResult, Choice, Failure, Fineness, PressureResult, Realisation, RingRow,
+        Strength, Watch,
         forces::{self, Group},
     },
     joint::{Fastener, Joint, Medium, Tightening},
@@ -62,6 +63,11 @@ pub struct Met {
 impl<'a> Chain<'a> {
     /// Prepares a joint: resilience, pressure cones, cells.
     pub fn new(joint: &'a Joint) -> Result<Self, Failure> {
+        Self::of(joint, Choice::Cone, &Watch::none())
+    }
+
+    /// Prepares a joint on the field of choice; an elastic field is solved here.
+    pub fn of(joint: &'a Joint, choice: Choice, watch: &Watch) -> Result<Self, Failure> {
         let groups = joint
             .fasteners
             .iter()
@@ -77,7 +83,10 @@ impl<'a> Chain<'a> {
             joint: Cow::Borrowed(joint),
             groups,
             group_of,
-            model: Model::Cone(ConeModel::new(joint)?),
+            model: match choice {
+                Choice::Cone => Model::Cone(ConeModel::new(joint)?),
+                Choice::Elastic { .. } => todo!(),
+            },
         };
         chain.model = chain.levelled()?;
         Ok(chain)
@@ -118,6 +127,20 @@ impl<'a> Chain<'a> {
         };
         chain.model = chain.levelled()?;
         Ok(chain)
+    }
+
+    /// The field as users name it.
+    pub fn field_name(&self) -> &'static str {
+        match &self.model {
+            Model::Cone(_) => "cone",
+        }
+    }
+
+    /// How finely it is solved, as users name it.
+    pub fn resolution_name(&self) -> &'static str {
+        match &self.model {
+            Model::Cone(_) => Fineness::Normal.name(),
+        }
     }
 
     /// The joint.

@@ -1,7 +1,7 @@
 //! The uncertain inputs of a joint: which there are, how they lie, what can be done about each.
 
 use crate::{
-    estimate::Realisation,
+    estimate::{Chain, Realisation},
     joint::{FillerKind, Friction, Joint, Medium, Tightening},
     numerics::special::normal_quantile,
 };
@@ -128,9 +128,22 @@ const FIELD: Input = Input {
     place: |at, u| at.field = even(u),
     reading: |at| at.field,
 };
+const FLATNESS: Input = Input {
+    name: "flatness, convex or concave",
+    remedy: "measure the faces and state bow or flatness_map, or call out a closer flatness",
+    place: |at, u| at.flatness = even(u),
+    reading: |at| at.flatness,
+};
+const FORM: Input = Input {
+    name: "rigid head, stuck faces, asperity give",
+    remedy: "state head_model, faces and compliance under [contact], or measure the joint",
+    place: |at, u| at.field = even(u),
+    reading: |at| at.field,
+};
 
 /// The inputs that can move this joint, in the order in which force and heat flow.
-pub fn inputs(joint: &Joint) -> Vec<Input> {
+pub fn inputs(chain: &Chain) -> Vec<Input> {
+    let joint = chain.joint();
     let mut found = Vec::new();
     let torque = joint
         .fasteners
@@ -193,7 +206,16 @@ pub fn inputs(joint: &Joint) -> Vec<Input> {
         found.push(GAS);
     }
     found.extend(CONDUCTIVITY);
-    found.push(FIELD);
+    if chain.knows_the_gap() {
+        if joint.plates.iter().any(|plate| {
+            plate.bow.is_none() && plate.flatness.is_some_and(|flatness| flatness > 0.0)
+        }) {
+            found.push(FLATNESS);
+        }
+        found.push(FORM);
+    } else {
+        found.push(FIELD);
+    }
     found
 }
 

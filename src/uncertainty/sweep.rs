@@ -31,6 +31,12 @@ const BEYOND: f64 = 1.25;
 ///
 /// Every torque is drawn with the same points, so that differences between torques are not noise.
 pub fn torque_sweep(joint: &Joint, options: &SweepOptions) -> Result<TorqueSweep, Failure> {
+    sweep_along(&Chain::new(joint)?, options)
+}
+
+/// The same for a joint whose chain is prepared.
+pub fn sweep_along(chain: &Chain, options: &SweepOptions) -> Result<TorqueSweep, Failure> {
+    let joint = chain.joint();
     let group = joint
         .fasteners
         .get(options.group)
@@ -44,8 +50,7 @@ pub fn torque_sweep(joint: &Joint, options: &SweepOptions) -> Result<TorqueSweep
         });
     };
     let stated = stated.torque;
-    let chain = Chain::new(joint)?;
-    let case = worst_case(&chain)?;
+    let case = worst_case(chain)?;
     let largest = chain.largest_torque(options.group);
     let from = options.from.unwrap_or(START * stated);
     let to = options
@@ -56,9 +61,9 @@ pub fn torque_sweep(joint: &Joint, options: &SweepOptions) -> Result<TorqueSweep
     }
     let points = (0..options.steps)
         .map(|step| from + (to - from) * step as f64 / (options.steps - 1) as f64)
-        .map(|torque| point(&chain, options, (case, torque)))
+        .map(|torque| point(chain, options, (case, torque)))
         .collect::<Result<Vec<TorquePoint>, Failure>>()?;
-    let cautions = estimate::nominal(&chain, &options.chain)?.cautions;
+    let cautions = estimate::nominal(chain, &options.chain)?.cautions;
     let best = points
         .iter()
         .filter(|point| point.passes)
