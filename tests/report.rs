@@ -699,6 +699,10 @@ fn a_curve_that_rises_again_says_beyond_which_torque() {
     let mut barred = torque_sweep();
     barred.points[1].passes = false;
     assert!(!sweep::torque(&barred).contains("worse"));
+    // A joint that is to keep heat back gains by what others lose.
+    let mut mount = torque_sweep();
+    mount.required = Some((0.09, Limit::Least));
+    assert!(!sweep::torque(&mount).contains("worse"));
 }
 
 #[test]

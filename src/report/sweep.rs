@@ -29,8 +29,11 @@ pub struct Worse {
 /// The rise of source to sink past the best torque; none where more torque never costs much.
 ///
 /// In gas or thin paste the gap between the bolts grows with the force, so that the curve may have
-/// its lowest point inside the window.
+/// its lowest point inside the window. A joint that must resist is never worse for resisting more.
 pub fn worse(sweep: &TorqueSweep) -> Option<Worse> {
+    if matches!(sweep.required, Some((_, Limit::Least))) {
+        return None;
+    }
     let beyond = sweep.best?;
     let nominal = |point: &TorquePoint| point.source_to_sink.nominal;
     let best = sweep.points.iter().find(|point| point.torque >= beyond)?;
