@@ -15,7 +15,10 @@ mod sheet;
 mod torque;
 
 pub use cumulative::{CumulativePlot, Curve, RadiusMark};
-pub use plan::{PlanBolt, PlanMap, PlanOutline, PlanShape, Scale};
+pub use plan::{
+    DetailKind, PlanBolt, PlanDetail, PlanMap, PlanOutline, PlanPair, PlanShape, Scale,
+};
+pub use ramp::Ramp;
 
 use crate::estimate::TorqueSweep;
 
@@ -33,6 +36,8 @@ pub enum Format {
 pub enum Drawing {
     /// A field over the plan of the joint.
     Plan(PlanMap),
+    /// Pressure and gap over the same plan.
+    PressureAndGap(Box<PlanPair>),
     /// Conductance gathered from the hole outwards.
     Cumulative(CumulativePlot),
     /// Resistance against torque.
@@ -77,6 +82,7 @@ pub fn png(drawing: &Drawing) -> Result<Vec<u8>, FigureError> {
 fn sheet(drawing: &Drawing) -> Result<sheet::Sheet, FigureError> {
     match drawing {
         Drawing::Plan(map) => plan::draw(map),
+        Drawing::PressureAndGap(pair) => plan::draw_pair(pair),
         Drawing::Cumulative(plot) => cumulative::draw(plot),
         Drawing::Torque(sweep) => torque::draw(sweep),
     }

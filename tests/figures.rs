@@ -3,8 +3,8 @@
 use ringsum::{
     estimate::{Band, FieldMap, TorquePoint, TorqueSweep},
     figures::{
-        CumulativePlot, Curve, Drawing, FigureError, Format, PlanBolt, PlanMap, PlanOutline,
-        PlanShape, RadiusMark, png, render, svg,
+        CumulativePlot, Curve, DetailKind, Drawing, FigureError, Format, PlanBolt, PlanDetail,
+        PlanMap, PlanOutline, PlanPair, PlanShape, RadiusMark, png, render, svg,
     },
     joint::Limit,
 };
@@ -59,6 +59,61 @@ fn furnished(mut map: PlanMap) -> PlanMap {
         [0.03, 0.03],
     ]));
     map
+}
+
+/// A solved field: pressed around four places, open between them, a corner off the faces.
+fn solved() -> FieldMap {
+    let size = [60, 40];
+    let [mut pressure, mut gap] = [Vec::new(), Vec::new()];
+    for k in 0..size[0] * size[1] {
+        let [x, y] = [(k % 60) as f64 + 0.5, (k / 60) as f64 + 0.5];
+        let away = (x - 30.0).abs() - 18.0;
+        let radius = away.hypot((y - 20.0).abs() - 10.0);
+        let nothing = x < 6.0 && y < 6.0;
+        let or_nothing = |value: f64| if nothing { f64::NAN } else { value };
+        pressure.push(or_nothing(2e6 * (7.0 - radius).max(0.0).sqrt()));
+        gap.push(or_nothing(0.2e-6 * (radius - 7.0).max(0.0).powf(1.5)));
+    }
+    FieldMap {
+        window: [0.0, 0.0, 0.06, 0.04],
+        size,
+        conductance: pressure.iter().map(|p| p / 1e3 + 50.0).collect(),
+        gap: Some(gap),
+        pressure,
+    }
+}
+
+/// The pair of a box with an angled plate, a cut-out, a foot and a rib.
+fn pair() -> PlanPair {
+    PlanPair::of("Box on panel", &solved())
+        .expect("a solved field knows its gap")
+        .furnished(|map| {
+            let mut map = furnished(map);
+            map.outlines[0].shape = PlanShape::Polygon(vec![
+                [0.006, 0.006],
+                [0.056, 0.006],
+                [0.056, 0.026],
+                [0.046, 0.036],
+                [0.006, 0.036],
+            ]);
+            for bolt in &mut map.bolts {
+                bolt.contact_radius = None;
+            }
+            map.details = [
+                (DetailKind::CutOut, [0.028, 0.017]),
+                (DetailKind::Foot, [0.010, 0.010]),
+                (DetailKind::Rib, [0.030, 0.010]),
+            ]
+            .map(|(kind, corner)| PlanDetail {
+                kind,
+                shape: PlanShape::Rectangle {
+                    corner,
+                    size: [0.006, 0.006],
+                },
+            })
+            .to_vec();
+            map
+        })
 }
 
 fn cumulative(curves: usize) -> CumulativePlot {
@@ -118,6 +173,10 @@ fn every_drawing() -> Vec<Drawing> {
         Drawing::Cumulative(cumulative(1)),
         Drawing::Cumulative(cumulative(5)),
         Drawing::Torque(sweep()),
+        Drawing::PressureAndGap(Box::new(pair())),
+        Drawing::Plan(furnished(
+            PlanMap::gap("Box on panel", &solved()).expect("a solved field knows its gap"),
+        )),
     ]
 }
 
@@ -200,6 +259,92 @@ fn a_conductance_map_names_its_unit_and_decades() {
 }
 
 #[test]
+fn a_pair_shows_both_maps_with_bars_units_and_one_key() {
+    let document = svg(&Drawing::PressureAndGap(Box::new(pair()))).unwrap();
+    let texts = texts(&document);
+    for part in [
+        "contact pressure, MPa",
+        "gap, µm",
+        "contact pressure, at most 5.",
+        "; gap, at most ",
+        "x, mm",
+        "y, mm",
+        "base plate",
+        "panel",
+        "foot",
+        "rib",
+        "cut-out",
+        "edge of contact",
+        "heated zone",
+        "no contact pressure",
+        "faces touch",
+        "no face on face",
+    ] {
+        assert!(holds(&texts, part), "{part} is missing in {texts:?}");
+    }
+    // Two fields and two bars, and every part is named once.
+    assert_eq!(document.matches("data:image/png;base64,").count(), 4);
+    for once in ["foot", "panel", "edge of contact", "heated zone", "y, mm"] {
+        assert_eq!(
+            texts.iter().filter(|text| *text == once).count(),
+            1,
+            "{once}"
+        );
+    }
+}
+
+/// Left and upper edge of every image, in the order of the document.
+fn images(document: &str) -> Vec<[f64; 2]> {
+    document
+        .split("<image x=\"")
+        .skip(1)
+        .map(|part| {
+            let (x, rest) = part.split_once("\" y=\"").expect("x stands before y");
+            let (y, _) = rest.split_once('"').expect("y ends");
+            [x, y].map(|edge| edge.parse().expect("an edge is a number"))
+        })
+        .collect()
+}
+
+#[test]
+fn maps_stand_side_by_side_and_those_of_long_strips_one_above_the_other() {
+    let wide = |width: f64| {
+        let mut field = solved();
+        field.window[2] = width;
+        let pair = PlanPair::of("", &field).unwrap();
+        // Bar and map of the pressure, bar and map of the gap.
+        let places = images(&svg(&Drawing::PressureAndGap(Box::new(pair))).unwrap());
+        let [_, pressure, _, gap] = places.as_slice() else {
+            panic!("{places:?}");
+        };
+        [gap[0] > pressure[0], gap[1] > pressure[1]]
+    };
+    assert_eq!(wide(0.06), [true, false]);
+    assert_eq!(wide(0.2), [false, true]);
+}
+
+#[test]
+fn the_cone_has_no_gap_to_draw() {
+    assert_eq!(PlanMap::gap("", &field()), None);
+    assert_eq!(PlanPair::of("", &field()), None);
+    // Its edge of contact is a circle at every bolt, that of a solved field a line of its own.
+    assert!(PlanMap::pressure("", &field()).contact.is_empty());
+    assert!(!PlanMap::pressure("", &solved()).contact.is_empty());
+    assert!(!PlanMap::conductance("", &solved()).contact.is_empty());
+}
+
+#[test]
+fn the_edge_of_contact_lies_where_pressure_ends() {
+    let lines = PlanMap::pressure("", &solved()).contact;
+    assert_eq!(lines.len(), 4, "a line around each of the four places");
+    for [x, y] in lines.concat() {
+        let radius = ((x - 0.03).abs() - 0.018).hypot((y - 0.02).abs() - 0.010);
+        // The cells are 1 mm wide, and the smoothing adds less than a tenth of one.
+        assert!((radius - 0.007).abs() < 0.7e-3, "{radius}");
+    }
+}
+
+#[test]
 fn one_curve_has_an_axis_of_shares_and_several_have_names() {
     let one = texts(&svg(&Drawing::Cumulative(cumulative(1))).unwrap());
     assert!(holds(&one, "share of the total, %") && holds(&one, "conductance, W/K"));
@@ -225,6 +370,28 @@ fn a_sweep_shows_stated_largest_best_and_required() {
     ] {
         assert!(holds(&texts, part), "{part} is missing in {texts:?}");
     }
+}
+
+#[test]
+fn a_lowest_point_inside_the_window_is_named_best() {
+    let flag = "best 1.5 N\u{a0}m, worse beyond";
+    let mut falling = sweep();
+    assert!(!holds(
+        &texts(&svg(&Drawing::Torque(falling.clone())).unwrap()),
+        "worse"
+    ));
+    for point in &mut falling.points {
+        let torque = point.torque;
+        point.source_to_sink.nominal = 0.4 + 0.2 * (torque - 1.5).powi(2);
+    }
+    falling.best = Some(1.5);
+    assert!(!falling.gap_unknown());
+    let texts = texts(&svg(&Drawing::Torque(falling)).unwrap());
+    assert!(holds(&texts, flag), "{texts:?}");
+    assert!(holds(
+        &texts,
+        "lowest that strength allows, at 1.5 N\u{a0}m"
+    ));
 }
 
 #[test]
@@ -264,6 +431,12 @@ fn hostile_titles_stay_text() {
                 map.title = HOSTILE.into();
                 map.outlines[0].name = HOSTILE.into();
                 map.unit = HOSTILE.into();
+            }
+            Drawing::PressureAndGap(pair) => {
+                pair.pressure.title = HOSTILE.repeat(40);
+                pair.pressure.outlines[0].name = HOSTILE.into();
+                pair.gap.quantity = HOSTILE.repeat(9);
+                pair.gap.unit = HOSTILE.into();
             }
             Drawing::Cumulative(plot) => {
                 plot.title = HOSTILE.repeat(40);
@@ -312,6 +485,27 @@ fn what_cannot_be_drawn_is_an_error() {
     assert_eq!(
         with(&|m| m.window[2] = f64::NAN),
         Err(FigureError::NotFinite("the window"))
+    );
+    let pair_with = |change: &dyn Fn(&mut PlanPair)| {
+        let mut changed = pair();
+        change(&mut changed);
+        svg(&Drawing::PressureAndGap(Box::new(changed)))
+    };
+    assert_eq!(
+        pair_with(&|p| p.gap.values.fill(f64::NAN)),
+        Err(FigureError::Empty("the field"))
+    );
+    assert_eq!(
+        pair_with(&|p| p.gap.values[3] = f64::INFINITY),
+        Err(FigureError::NotFinite("the field"))
+    );
+    assert_eq!(
+        pair_with(&|p| p.gap.values.truncate(3)),
+        Err(FigureError::Shape("the field"))
+    );
+    assert_eq!(
+        pair_with(&|p| p.gap.window[2] *= 2.0),
+        Err(FigureError::Shape("two maps of different windows"))
     );
     assert_eq!(
         svg(&Drawing::Cumulative(cumulative(0))),

@@ -3,8 +3,9 @@
 use ringsum::{
     diagnostic::{Assumption, Caution},
     estimate::{
-        Band, BoltResult, CaseResult, Driver, Estimate, Met, PlaneResult, PressureResult,
-        RequirementResult, Results, RingRow, Rise, TorquePoint, TorqueSweep,
+        Band, BoltResult, CaseResult, ConeBeside, Driver, Estimate, Flatness, Met, PlaneResult,
+        PressureResult, RequirementResult, Results, RingRow, Rise, SolvedField, SolverHealth,
+        TorquePoint, TorqueSweep,
     },
     joint::{Limit, Plane, RequirementKind},
     report::{
@@ -113,6 +114,47 @@ fn estimate() -> Estimate {
         }],
     }
 }
+
+/// The same joint with a solved field.
+fn solved(flatness: Flatness) -> Estimate {
+    let mut found = estimate();
+    found.field = "elastic";
+    found.resolution = "fine";
+    let pressure = &mut found.cases[0].pressure;
+    pressure.gap_max = Some(5.6e-6);
+    pressure.gap_mean = Some(3.21e-6);
+    pressure.solved = Some(SolvedField {
+        mean_force_radius: 4.9e-3,
+        flatness,
+        cone: Some(ConeBeside {
+            radius_95: 6.014e-3,
+            contact: 0.0052,
+            source_to_sink: 0.265,
+        }),
+        health: SolverHealth {
+            unknowns: 45_000,
+            steps: 5,
+            rounds: 23,
+            force_balance: -2e-9,
+            complementarity: 1e-8,
+            energy_fell: true,
+            residual: 3e-9,
+            heat_balance: 1e-10,
+        },
+    });
+    found
+}
+
+const KNOWN: Flatness = Flatness::Known {
+    initial: 30e-6,
+    left: 5.6e-6,
+    flat: 5.7e-6,
+};
+const STATED: Flatness = Flatness::Stated {
+    height: 100e-6,
+    left: [9e-6, 12e-6],
+    flat: 5.7e-6,
+};
 
 fn keys(value: &Value) -> Vec<&str> {
     value
@@ -394,6 +436,131 @@ fn brief_counts_the_assumptions_and_nominal_alone_shows_dashes() {
 }
 
 #[test]
+fn a_solved_field_adds_its_keys_and_the_cone_leaves_them_null() {
+    const ADDED: [&str; 4] = ["mean_force_radius", "flatness", "cone", "solver"];
+    let cone = json::estimate(&estimate());
+    has(&cone["pressure"], &ADDED);
+    for key in ADDED {
+        assert_eq!(cone["pressure"][key], Value::Null, "{key}");
+    }
+    let object = json::estimate(&solved(KNOWN));
+    assert_eq!(object["field"], json!("elastic"));
+    assert_eq!(object["resolution"], json!("fine"));
+    let pressure = &object["pressure"];
+    assert_eq!(pressure["mean_force_radius"], json!(4.9e-3));
+    assert_eq!(pressure["cone"]["source_to_sink"], json!(0.265));
+    let difference = pressure["cone"]["difference"]["source_to_sink"]
+        .as_f64()
+        .expect("a number");
+    // 0.265 against 0.25 in the solved field; the bar is rounding.
+    assert!((difference - 0.06).abs() < 1e-12, "{difference}");
+    assert_eq!(
+        pressure["solver"],
+        json!({
+            "unknowns": 45_000, "steps": 5, "rounds": 23, "force_balance": -2e-9,
+            "complementarity": 1e-8, "energy_fell": true, "residual": 3e-9, "heat_balance": 1e-10,
+        })
+    );
+}
+
+#[test]
+fn flatness_in_json_says_kind_heights_and_whether_it_closes() {
+    let flatness = |flatness| json::estimate(&solved(flatness))["pressure"]["flatness"].clone();
+    assert_eq!(
+        flatness(Flatness::Flat),
+        json!({
+            "kind": "flat", "height": null, "left": null, "left_convex": null,
+            "left_concave": null, "left_flat": null, "closes": null,
+        })
+    );
+    assert_eq!(
+        flatness(KNOWN),
+        json!({
+            "kind": "known", "height": 30e-6, "left": 5.6e-6, "left_convex": null,
+            "left_concave": null, "left_flat": 5.7e-6, "closes": true,
+        })
+    );
+    assert_eq!(
+        flatness(STATED),
+        json!({
+            "kind": "stated", "height": 100e-6, "left": 12e-6, "left_convex": 9e-6,
+            "left_concave": 12e-6, "left_flat": 5.7e-6, "closes": false,
+        })
+    );
+}
+
+/// The lines about pressure and what follows from it, up to the next blank line.
+fn pressure_lines(report: &str) -> Vec<&str> {
+    report
+        .lines()
+        .skip_while(|line| !line.starts_with("pressure:"))
+        .take_while(|line| !line.is_empty())
+        .collect()
+}
+
+#[test]
+fn a_solved_field_is_told_in_four_lines() {
+    let report = text::estimate(&solved(KNOWN));
+    assert!(report.contains("field elastic, fine;"), "{report}");
+    assert_eq!(
+        pressure_lines(&report),
+        [
+            "pressure: 61.20 MPa at most, contact on 950.0 mm², 95 % of the force within 6.200 mm of a bolt axis",
+            "mean radius of the force 4.900 mm; gap between the faces 3.210 µm mean, 5.600 µm widest",
+            "bow of 30 µm closes: widest gap 5.600 µm, 5.700 µm were the faces flat",
+            "cone: 95 % within 6.014 mm (−3 %), contact only 0.005200 (+4 %), source to sink 0.2650 K/W (+6 %)",
+        ]
+    );
+}
+
+#[test]
+fn a_shape_that_stays_open_is_called_so() {
+    let wide = Flatness::Known {
+        initial: 300e-6,
+        left: 210e-6,
+        flat: 5.7e-6,
+    };
+    let report = text::estimate(&solved(wide));
+    assert!(
+        report.contains("bow of 300 µm stays open: widest gap 210.0 µm"),
+        "{report}"
+    );
+    let report = text::estimate(&solved(STATED));
+    assert!(
+        report.contains("stated flatness 100 µm stays open: taken convex and concave"),
+        "{report}"
+    );
+    assert!(report.contains("widest gap 9.000 or 12.00 µm"), "{report}");
+    // Flat faces have no shape to close, and a joint the cone cannot carry has no cone beside it.
+    let mut flat = solved(Flatness::Flat);
+    let field = flat.cases[0].pressure.solved.as_mut().expect("solved");
+    field.cone = None;
+    assert_eq!(pressure_lines(&text::estimate(&flat)).len(), 2);
+}
+
+#[test]
+fn the_solver_speaks_only_in_full() {
+    let mut found = solved(KNOWN);
+    assert!(!text::estimate(&found).contains("solver:"));
+    let full = text::estimate_at(&found, Detail::Full);
+    assert!(
+        full.contains("solver: 45000 unknowns, 5 steps, 23 rounds; off by 2e-9 force"),
+        "{full}"
+    );
+    assert!(!full.contains("ROSE"), "{full}");
+    let field = found.cases[0].pressure.solved.as_mut().expect("solved");
+    field.health.energy_fell = false;
+    let full = text::estimate_at(&found, Detail::Full);
+    assert!(full.contains("energy ROSE in a step"), "{full}");
+    for flatness in [KNOWN, STATED, Flatness::Flat] {
+        let full = text::estimate_at(&solved(flatness), Detail::Full);
+        for line in full.lines() {
+            assert!(line.chars().count() <= WIDTH, "{line}");
+        }
+    }
+}
+
+#[test]
 fn text_carries_no_control_characters_of_the_file() {
     let mut hostile = estimate();
     hostile.title = "box\u{1b}]0;taken over\u{7}".to_owned();
@@ -508,6 +675,34 @@ fn without_a_torque_that_passes_none_is_called_best() {
         "{report}"
     );
     assert_eq!(json::torque(&barred)["best"], Value::Null);
+}
+
+#[test]
+fn a_curve_that_rises_again_says_beyond_which_torque() {
+    // The fixture rises from 0.1 at the best to 0.11 at the last torque that strength allows; the
+    // 0.12 beyond strength is not spoken of.
+    let report = sweep::torque(&torque_sweep());
+    assert!(
+        report.contains(
+            "more torque makes it worse beyond 1.000 N·m: 10 % above the lowest at 1.600 N·m"
+        ),
+        "{report}"
+    );
+    let with = |nominal: f64| {
+        let mut sweep = torque_sweep();
+        sweep.points[1].source_to_sink.nominal = nominal;
+        sweep::torque(&sweep)
+    };
+    // Half a percent is the bar.
+    assert!(!with(0.1004).contains("worse"), "{}", with(0.1004));
+    assert!(with(0.1006).contains("worse"), "{}", with(0.1006));
+    let mut barred = torque_sweep();
+    barred.points[1].passes = false;
+    assert!(!sweep::torque(&barred).contains("worse"));
+    // A joint that is to keep heat back gains by what others lose.
+    let mut mount = torque_sweep();
+    mount.required = Some((0.09, Limit::Least));
+    assert!(!sweep::torque(&mount).contains("worse"));
 }
 
 #[test]

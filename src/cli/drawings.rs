@@ -3,41 +3,54 @@
 use crate::{
     estimate::{Estimate, FieldMap, RingRow},
     figures::{
-        CumulativePlot, Curve, Drawing, PlanBolt, PlanMap, PlanOutline, PlanShape, RadiusMark,
+        CumulativePlot, Curve, Drawing, PlanBolt, PlanMap, PlanOutline, PlanPair, PlanShape,
+        RadiusMark,
     },
     joint::{Joint, Outline, Plate, Zone},
 };
 
-/// File names of the figures, in the order of force and heat.
-pub const NAMES: [&str; 3] = ["pressure", "conductance", "cumulative"];
+const PRESSURE: &str = "pressure";
+const PRESSURE_AND_GAP: &str = "pressure_and_gap";
+const CONDUCTANCE: &str = "conductance";
+const CUMULATIVE: &str = "cumulative";
 
-/// Pressure, local conductance and cumulative conductance, each with its file name.
+/// Every file name a figure may have, in the order of force and heat.
+pub const NAMES: [&str; 4] = [PRESSURE, PRESSURE_AND_GAP, CONDUCTANCE, CUMULATIVE];
+
+/// Pressure, local conductance and cumulative conductance, each with its file name; a solved field
+/// shows its gap beside the pressure.
 pub fn of_joint(
     joint: &Joint,
     nominal: &Estimate,
     (field, rings): (&FieldMap, &[Vec<RingRow>]),
 ) -> Vec<(&'static str, Drawing)> {
-    let on_plan = |map: PlanMap| {
-        Drawing::Plan(PlanMap {
-            outlines: joint.plates.iter().map(outline).collect(),
-            bolts: bolts(joint, nominal),
-            heated: heated(joint.source.zone),
-            ..map
-        })
+    let furnish = |map: PlanMap| PlanMap {
+        outlines: joint.plates.iter().map(outline).collect(),
+        bolts: bolts(joint, nominal, field),
+        heated: heated(joint.source.zone),
+        ..map
     };
+    let pressure = match PlanPair::of(&joint.title, field) {
+        Some(pair) => (
+            PRESSURE_AND_GAP,
+            Drawing::PressureAndGap(Box::new(pair.furnished(furnish))),
+        ),
+        None => (
+            PRESSURE,
+            Drawing::Plan(furnish(PlanMap::pressure(&joint.title, field))),
+        ),
+    };
+    let conductance = Drawing::Plan(furnish(PlanMap::conductance(&joint.title, field)));
     let cumulative = Drawing::Cumulative(CumulativePlot {
         title: joint.title.clone(),
         curves: curves(rings),
         marks: marks(joint, nominal),
     });
-    NAMES
-        .into_iter()
-        .zip([
-            on_plan(PlanMap::pressure(&joint.title, field)),
-            on_plan(PlanMap::conductance(&joint.title, field)),
-            cumulative,
-        ])
-        .collect()
+    vec![
+        pressure,
+        (CONDUCTANCE, conductance),
+        (CUMULATIVE, cumulative),
+    ]
 }
 
 fn outline(plate: &Plate) -> PlanOutline {
@@ -67,7 +80,9 @@ fn heated(zone: Zone) -> Option<PlanShape> {
     }
 }
 
-fn bolts(joint: &Joint, nominal: &Estimate) -> Vec<PlanBolt> {
+fn bolts(joint: &Joint, nominal: &Estimate, field: &FieldMap) -> Vec<PlanBolt> {
+    // A solved field brings its own edge of contact, which is no circle.
+    let round = field.gap.is_none();
     let results = nominal.cases.first().map_or(&[][..], |case| &case.bolts);
     joint
         .bolts()
@@ -76,7 +91,10 @@ fn bolts(joint: &Joint, nominal: &Estimate) -> Vec<PlanBolt> {
             at,
             hole_radius: group.hole_radius[0].max(group.hole_radius[1]),
             head_radius: group.head_seat.outer_radius,
-            contact_radius: results.get(index).map(|bolt| bolt.contact_radius),
+            contact_radius: results
+                .get(index)
+                .filter(|_| round)
+                .map(|bolt| bolt.contact_radius),
         })
         .collect()
 }
@@ -164,7 +182,10 @@ fn marks(joint: &Joint, nominal: &Estimate) -> Vec<RadiusMark> {
         mark("bearing", group.head_seat.outer_radius),
     ];
     let results = nominal.cases.first().map_or(&[][..], |case| &case.bolts);
-    if let Some(bolt) = results.first() {
+    if let Some(bolt) = results
+        .first()
+        .filter(|bolt| bolt.contact_radius.is_finite())
+    {
         marks.push(mark("edge of contact", bolt.contact_radius));
     }
     marks

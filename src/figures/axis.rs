@@ -132,6 +132,25 @@ impl Axis {
         lead.unwrap_or(10.0) * decade
     }
 
+    /// Enough ticks for two labels, without which an axis has no scale, where these find room.
+    fn at_least_two(&self, most: usize, length: f64, room: impl Fn(usize) -> f64) -> usize {
+        if self.ticks(most).len() >= 2 {
+            return most;
+        }
+        let roomy = |more: &usize| {
+            let places: Vec<f64> = self
+                .ticks(*more)
+                .iter()
+                .map(|(value, _)| self.place(*value) * length)
+                .collect();
+            places.len() >= 2
+                && places
+                    .windows(2)
+                    .all(|pair| pair[1] - pair[0] >= room(*more))
+        };
+        (most + 1..=most + 2).find(roomy).unwrap_or(most)
+    }
+
     /// Widest tick label, points.
     pub(super) fn label_width(&self, most: usize) -> f64 {
         self.ticks(most)
@@ -146,9 +165,15 @@ pub(super) fn ticks_for(length: f64, room: f64) -> usize {
     ((length / room) as usize).clamp(1, 10)
 }
 
+/// Ticks a vertical axis of this length can carry.
+fn side_ticks(axis: &Axis, height: f64) -> usize {
+    let most = ticks_for(height, 32.0);
+    axis.at_least_two(most, height, |_| 1.6 * TICK)
+}
+
 /// Room a vertical axis takes beside its frame, points.
 pub(super) fn side_room(axis: &Axis, height: f64) -> f64 {
-    axis.label_width(ticks_for(height, 32.0)) + TICK_LENGTH + 4.0 + 1.7 * LABEL
+    axis.label_width(side_ticks(axis, height)) + TICK_LENGTH + 4.0 + 1.7 * LABEL
 }
 
 /// Whether faint lines cross the frame at the ticks.
@@ -162,7 +187,7 @@ pub(super) enum Grid {
 
 /// The axis on the left of the frame; its title runs upwards.
 pub(super) fn left(sheet: &mut Sheet, frame: Frame, (axis, title): (&Axis, &str), grid: Grid) {
-    let most = ticks_for(frame.height(), 32.0);
+    let most = side_ticks(axis, frame.height());
     let fine = Stroke::solid(NARROW, GREY);
     for (value, label) in axis.ticks(most) {
         let y = frame.bottom - axis.place(value) * frame.height();
@@ -183,7 +208,7 @@ pub(super) fn left(sheet: &mut Sheet, frame: Frame, (axis, title): (&Axis, &str)
 
 /// The axis on the right of the frame; its title runs upwards too.
 pub(super) fn right(sheet: &mut Sheet, frame: Frame, (axis, title): (&Axis, &str)) {
-    let most = ticks_for(frame.height(), 32.0);
+    let most = side_ticks(axis, frame.height());
     let fine = Stroke::solid(NARROW, GREY);
     let widest = axis.label_width(most);
     for (value, label) in axis.ticks(most) {
@@ -208,7 +233,9 @@ pub(super) fn bottom(sheet: &mut Sheet, frame: Frame, (axis, title): (&Axis, Opt
         anchor: Anchor::Middle,
         ..TEXT
     };
-    for (value, label) in axis.ticks(ticks_for(frame.width(), widest + 16.0)) {
+    let most = ticks_for(frame.width(), widest + 16.0);
+    let most = axis.at_least_two(most, frame.width(), |more| axis.label_width(more) + 6.0);
+    for (value, label) in axis.ticks(most) {
         let x = frame.left + axis.place(value) * frame.width();
         sheet.line(&[[x, frame.bottom], [x, frame.bottom + TICK_LENGTH]], fine);
         if title.is_some() {
@@ -344,6 +371,15 @@ mod tests {
             labels(Axis::logarithmic(0.02, 0.5), 8),
             ["0.02", "0.05", "0.1", "0.2", "0.5"]
         );
+    }
+
+    #[test]
+    fn a_short_axis_takes_a_second_label_where_it_finds_room() {
+        let axis = Axis::over(0.0, 30.0);
+        assert_eq!(labels(axis, 1), ["0"]);
+        let room = |_| 20.0;
+        assert_eq!(labels(axis, axis.at_least_two(1, 40.0, room)), ["0", "20"]);
+        assert_eq!(labels(axis, axis.at_least_two(1, 20.0, room)), ["0"]);
     }
 
     #[test]

@@ -23,6 +23,8 @@ pub(super) enum Sample {
     HollowDot(Colour),
     /// A square with a colour of the field.
     Patch(Colour),
+    /// A square with a colour of its own and its line.
+    Edged(Colour, Stroke),
 }
 
 const SAMPLE: f64 = 24.0;
@@ -82,16 +84,20 @@ fn draw(sheet: &mut Sheet, place: Frame, sample: Sample) {
         }
         Sample::Dot(colour) => sheet.disc(centre, 3.0, colour),
         Sample::HollowDot(colour) => hollow_dot(sheet, centre, colour),
-        Sample::Patch(colour) => {
-            let square = Frame {
-                left: centre[0] - 6.0,
-                right: centre[0] + 6.0,
-                ..place
-            };
-            sheet.area(corners(square), colour);
-            sheet.closed_within(square, &corners(square), Stroke::solid(NARROW, GREY));
-        }
+        Sample::Patch(colour) => patch(sheet, place, (colour, Stroke::solid(NARROW, GREY))),
+        Sample::Edged(colour, stroke) => patch(sheet, place, (colour, stroke)),
     }
+}
+
+fn patch(sheet: &mut Sheet, place: Frame, (colour, stroke): (Colour, Stroke)) {
+    let middle = f64::midpoint(place.left, place.right);
+    let square = Frame {
+        left: middle - 6.0,
+        right: middle + 6.0,
+        ..place
+    };
+    sheet.area(corners(square), colour);
+    sheet.closed_within(square, &corners(square), stroke);
 }
 
 /// A dot with a white middle, for one point among the points of a curve.

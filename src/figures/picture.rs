@@ -1,6 +1,11 @@
 //! A field as one indexed image.
 
-use crate::figures::{FigureError, clip::Frame, ramp, sheet::Colour};
+use crate::figures::{
+    FigureError,
+    clip::Frame,
+    ramp::{self, Ramp},
+    sheet::{Colour, PAPER},
+};
 
 /// Index of a pixel that shows nothing.
 pub(super) const NOTHING: u8 = 0;
@@ -14,25 +19,37 @@ pub(super) struct Picture {
     pub(super) size: [usize; 2],
     /// Row by row from above: [`NOTHING`] or one more than the step of the ramp.
     pub(super) indices: Vec<u8>,
+    /// The colours of the steps.
+    pub(super) ramp: Ramp,
+    /// Colour of pixels that show nothing; transparent when none.
+    pub(super) ground: Option<Colour>,
 }
 
 impl Picture {
     /// A vertical bar of the whole ramp, dark at the top.
-    pub(super) fn bar(place: Frame) -> Self {
+    pub(super) fn bar(place: Frame, ramp: Ramp) -> Self {
+        let mut bar = Self::level_bar(place, ramp);
+        bar.size = [1, ramp::STEPS];
+        bar.indices.reverse();
+        bar
+    }
+
+    /// A level bar of the whole ramp, dark at the right.
+    pub(super) fn level_bar(place: Frame, ramp: Ramp) -> Self {
         Self {
             place,
-            size: [1, ramp::STEPS],
-            indices: (0..ramp::STEPS)
-                .rev()
-                .map(|step| (step + 1) as u8)
-                .collect(),
+            size: [ramp::STEPS, 1],
+            indices: (0..ramp::STEPS).map(|step| (step + 1) as u8).collect(),
+            ramp,
+            ground: None,
         }
     }
 
-    /// The image as PNG with a palette; nothing is transparent.
+    /// The image as PNG with a palette; without a ground nothing is transparent.
     pub(super) fn png(&self) -> Result<Vec<u8>, FigureError> {
-        let mut palette = vec![0xFF; 3];
-        for Colour(r, g, b) in ramp::colours() {
+        let Colour(r, g, b) = self.ground.unwrap_or(PAPER);
+        let mut palette = vec![r, g, b];
+        for Colour(r, g, b) in self.ramp.colours() {
             palette.extend([r, g, b]);
         }
         let mut bytes = Vec::new();
@@ -40,7 +57,9 @@ impl Picture {
         encoder.set_color(png::ColorType::Indexed);
         encoder.set_depth(png::BitDepth::Eight);
         encoder.set_palette(palette);
-        encoder.set_trns(vec![0]);
+        if self.ground.is_none() {
+            encoder.set_trns(vec![0]);
+        }
         encoder.set_compression(png::Compression::High);
         encoder
             .write_header()
@@ -51,7 +70,7 @@ impl Picture {
 
     /// Paints the image into a buffer of RGB pixels, `scale` pixels to the point.
     pub(super) fn paint(&self, buffer: &mut [u8], width: usize, scale: f64) {
-        let colours = ramp::colours();
+        let colours = self.ramp.colours();
         let place = self.place;
         let [columns, rows] = self.size;
         let from = |edge: f64| (edge * scale).round().max(0.0) as usize;
@@ -63,10 +82,13 @@ impl Picture {
                 let at =
                     (row as usize).min(rows - 1) * columns + (column as usize).min(columns - 1);
                 let index = self.indices[at];
-                if index == NOTHING {
+                let shown = match index {
+                    NOTHING => self.ground,
+                    step => Some(colours[usize::from(step) - 1]),
+                };
+                let Some(Colour(r, g, b)) = shown else {
                     continue;
-                }
-                let Colour(r, g, b) = colours[usize::from(index) - 1];
+                };
                 if let Some(pixel) = buffer.get_mut(3 * (y * width + x)..3 * (y * width + x) + 3) {
                     pixel.copy_from_slice(&[r, g, b]);
                 }

@@ -4,18 +4,26 @@ use crate::{
     estimate::FieldMap,
     figures::{
         FigureError,
-        axis::{self, Axis, BELOW, Grid, Spread},
+        axis::{self, Axis, BELOW, Grid},
         clip::Frame,
         drawable,
-        legend::{Sample, corners, legend},
+        legend::{corners, legend},
         picture::Picture,
-        ramp,
-        sheet::{ACCENT, GREY, INK, NARROW, Sheet, Stroke, WIDE, circle},
+        ramp::Ramp,
+        sheet::{Colour, GREY, NARROW, Sheet, Stroke},
     },
 };
 
 mod bolts;
+mod contour;
+mod pair;
+mod parts;
 mod raster;
+mod shapes;
+
+pub use pair::PlanPair;
+pub(super) use pair::draw as draw_pair;
+pub use shapes::{DetailKind, PlanBolt, PlanDetail, PlanOutline, PlanShape};
 
 /// How the values of a map meet its colours.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -45,59 +53,24 @@ pub struct PlanMap {
     pub factor: f64,
     /// How values meet colours.
     pub scale: Scale,
+    /// The colours.
+    pub ramp: Ramp,
     /// The plates, the upper one first.
     pub outlines: Vec<PlanOutline>,
+    /// Parts of the plates: cut-outs, feet, ribs.
+    pub details: Vec<PlanDetail>,
     /// The bolts, numbered in this order.
     pub bolts: Vec<PlanBolt>,
     /// Where heat enters, when that is not the whole face.
     pub heated: Option<PlanShape>,
-}
-
-/// The edge of one plate.
-#[derive(Clone, Debug, PartialEq)]
-pub struct PlanOutline {
-    /// Name of the plate.
-    pub name: String,
-    /// Its edge.
-    pub shape: PlanShape,
-}
-
-/// A shape in plan, joint coordinates, m.
-#[derive(Clone, Debug, PartialEq)]
-pub enum PlanShape {
-    /// A rectangle parallel to the axes.
-    Rectangle {
-        /// Lower left corner, m.
-        corner: [f64; 2],
-        /// Width and height, m.
-        size: [f64; 2],
-    },
-    /// A disc.
-    Disc {
-        /// Centre, m.
-        centre: [f64; 2],
-        /// Radius, m.
-        radius: f64,
-    },
-    /// A polygon, m.
-    Polygon(Vec<[f64; 2]>),
-}
-
-/// One bolt in plan.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct PlanBolt {
-    /// Axis, joint coordinates, m.
-    pub at: [f64; 2],
-    /// Radius of the hole between the faces, m.
-    pub hole_radius: f64,
-    /// Outer radius under the head or washer, m.
-    pub head_radius: f64,
-    /// Radius where contact ends, m; none where it is not a circle.
-    pub contact_radius: Option<f64>,
+    /// Where contact ends, lines in joint coordinates, m; for fields whose contact is not round.
+    pub contact: Vec<Vec<[f64; 2]>>,
 }
 
 impl PlanMap {
     /// The pressure of a field map, `MPa`; plates, bolts and heated zone are yet to be filled in.
+    ///
+    /// A solved field, which knows the gap, brings its own edge of contact.
     pub fn pressure(title: &str, field: &FieldMap) -> Self {
         Self {
             title: title.into(),
@@ -108,9 +81,15 @@ impl PlanMap {
             unit: "MPa".into(),
             factor: 1e-6,
             scale: Scale::Linear,
+            ramp: Ramp::Sea,
             outlines: Vec::new(),
+            details: Vec::new(),
             bolts: Vec::new(),
             heated: None,
+            contact: match field.gap {
+                Some(_) => contour::contact_edge(field),
+                None => Vec::new(),
+            },
         }
     }
 
@@ -125,45 +104,24 @@ impl PlanMap {
             ..Self::pressure(title, field)
         }
     }
-}
 
-impl PlanShape {
-    /// Whether the shape covers a place.
-    fn covers(&self, [x, y]: [f64; 2]) -> bool {
-        match self {
-            Self::Rectangle { corner, size } => {
-                (0.0..=size[0]).contains(&(x - corner[0]))
-                    && (0.0..=size[1]).contains(&(y - corner[1]))
-            }
-            Self::Disc { centre, radius } => (x - centre[0]).hypot(y - centre[1]) <= *radius,
-            Self::Polygon(points) => {
-                let mut inside = false;
-                for (index, a) in points.iter().enumerate() {
-                    let b = points[(index + 1) % points.len()];
-                    if (a[1] > y) != (b[1] > y)
-                        && x < a[0] + (y - a[1]) / (b[1] - a[1]) * (b[0] - a[0])
-                    {
-                        inside = !inside;
-                    }
-                }
-                inside
-            }
-        }
+    /// The gap of a field map, µm, on a ramp of its own; likewise. None for the cone.
+    pub fn gap(title: &str, field: &FieldMap) -> Option<Self> {
+        Some(Self {
+            values: field.gap.clone()?,
+            quantity: "gap".into(),
+            unit: "µm".into(),
+            factor: 1e6,
+            ramp: Ramp::Umber,
+            ..Self::pressure(title, field)
+        })
     }
 
-    /// The edge on the sheet.
-    fn edge(&self, view: &View) -> Vec<[f64; 2]> {
-        match self {
-            Self::Rectangle {
-                corner: [x, y],
-                size: [w, h],
-            } => [[*x, *y], [x + w, *y], [x + w, y + h], [*x, y + h]]
-                .map(|p| view.point(p))
-                .to_vec(),
-            Self::Disc { centre, radius } => {
-                circle(view.point(*centre), radius * view.points_per_metre)
-            }
-            Self::Polygon(points) => points.iter().map(|p| view.point(*p)).collect(),
+    /// The ground where the field has no value: tinted where paper white is a value itself.
+    fn ground(&self) -> Option<Colour> {
+        match self.ramp {
+            Ramp::Sea => None,
+            Ramp::Umber => Some(parts::TINT),
         }
     }
 }
@@ -173,6 +131,8 @@ struct View {
     frame: Frame,
     window: [f64; 4],
     points_per_metre: f64,
+    /// Colour where the field has no value; paper when none.
+    ground: Option<Colour>,
 }
 
 impl View {
@@ -187,24 +147,11 @@ impl View {
 const LARGEST: f64 = 400.0;
 const MARGIN: f64 = 20.0;
 
-const HIDDEN: Stroke = Stroke::dashed(1.0, INK, &[5.0, 2.5]);
-const HEAD: Stroke = Stroke::solid(NARROW, INK);
-const HOLE: Stroke = Stroke::solid(WIDE, INK);
-const CONTACT: Stroke = Stroke::dashed(NARROW, INK, &[3.0, 2.2]);
-const HEATED: Stroke = Stroke::dashed(WIDE, ACCENT, &[10.0, 2.5, 2.0, 2.5, 2.0, 2.5]);
-
 /// Draws the map.
 pub(super) fn draw(map: &PlanMap) -> Result<Sheet, FigureError> {
     let colours = colour_axis(map)?;
     let window = map.window;
-    let [wide, tall] = [window[2] - window[0], window[3] - window[1]];
-    for edge in window {
-        drawable(edge, "the window")?;
-    }
-    let fits = wide > 1e-12 && tall > 1e-12 && wide.max(tall) < 1e6 * wide.min(tall);
-    if !fits || wide.max(tall) < 1e-9 * window.iter().fold(0.0, |m: f64, e| m.max(e.abs())) {
-        return Err(FigureError::Shape("the window"));
-    }
+    let [wide, tall] = extent(window)?;
     let points_per_metre = (LARGEST / wide).min(LARGEST / tall);
     let (width, height) = (wide * points_per_metre, tall * points_per_metre);
     let x_axis = Axis::over(window[0] * 1e3, window[2] * 1e3);
@@ -228,16 +175,11 @@ pub(super) fn draw(map: &PlanMap) -> Result<Sheet, FigureError> {
         frame,
         window,
         points_per_metre,
+        ground: map.ground(),
     };
     sheet.pictures.push(raster::picture(map, &view, &colours));
 
-    draw_plates(&mut sheet, &view, map);
-    for bolt in &map.bolts {
-        bolts::draw(&mut sheet, &view, bolt);
-    }
-    if map.bolts.len() > 1 {
-        bolts::number(&mut sheet, &view, &map.bolts);
-    }
+    parts::draw(&mut sheet, &view, map);
     axis::left(&mut sheet, frame, (&y_axis, "y, mm"), Grid::Without);
     axis::bottom(&mut sheet, frame, (&x_axis, Some("x, mm")));
 
@@ -247,7 +189,7 @@ pub(super) fn draw(map: &PlanMap) -> Result<Sheet, FigureError> {
         right: bar_left + bar_width,
         bottom: top + area,
     };
-    sheet.pictures.push(Picture::bar(bar));
+    sheet.pictures.push(Picture::bar(bar, map.ramp));
     sheet.closed_within(bar, &corners(bar), Stroke::solid(NARROW, GREY));
     let title = format!("{}, {}", map.quantity, map.unit);
     axis::right(&mut sheet, bar, (&colours, &title));
@@ -258,8 +200,21 @@ pub(super) fn draw(map: &PlanMap) -> Result<Sheet, FigureError> {
         right: sheet.size[0] - MARGIN,
         bottom: f64::INFINITY,
     };
-    sheet.size[1] = legend(&mut sheet, room, &key(map, &colours)) + 12.0;
+    sheet.size[1] = legend(&mut sheet, room, &parts::key(map, &colours, view.ground)) + 12.0;
     Ok(sheet)
+}
+
+/// Width and height of a window that can be drawn, m.
+fn extent(window: [f64; 4]) -> Result<[f64; 2], FigureError> {
+    for edge in window {
+        drawable(edge, "the window")?;
+    }
+    let [wide, tall] = [window[2] - window[0], window[3] - window[1]];
+    let fits = wide > 1e-12 && tall > 1e-12 && wide.max(tall) < 1e6 * wide.min(tall);
+    if !fits || wide.max(tall) < 1e-9 * window.iter().fold(0.0, |m: f64, e| m.max(e.abs())) {
+        return Err(FigureError::Shape("the window"));
+    }
+    Ok([wide, tall])
 }
 
 /// The highest value in words, since a colour cannot be read to three digits.
@@ -297,63 +252,6 @@ fn colour_axis(map: &PlanMap) -> Result<Axis, FigureError> {
         Scale::Logarithmic if high > 0.0 => Axis::logarithmic(least.max(high * 1e-3), high),
         _ => Axis::over(low.min(0.0), high.max(low.min(0.0))),
     })
-}
-
-fn draw_plates(sheet: &mut Sheet, view: &View, map: &PlanMap) {
-    for (index, outline) in map.outlines.iter().enumerate().rev() {
-        draw_shape(sheet, view, &outline.shape, plate_stroke(index));
-    }
-    if let Some(zone) = &map.heated {
-        draw_shape(sheet, view, zone, HEATED);
-    }
-}
-
-fn draw_shape(sheet: &mut Sheet, view: &View, shape: &PlanShape, stroke: Stroke) {
-    // Edges on the rim of the window are drawn whole, so the frame gives half a line.
-    let frame = grown(view.frame, 1.0);
-    if let PlanShape::Disc { centre, radius } = shape {
-        let circle = (view.point(*centre), radius * view.points_per_metre);
-        sheet.circle_within(frame, circle, stroke);
-    } else {
-        sheet.closed_within(frame, &shape.edge(view), stroke);
-    }
-}
-
-/// The upper plate in full; what it may hide in dashes, as drawings do.
-fn plate_stroke(index: usize) -> Stroke {
-    if index == 0 {
-        Stroke::solid(WIDE, INK)
-    } else {
-        HIDDEN
-    }
-}
-
-fn key(map: &PlanMap, colours: &Axis) -> Vec<(Sample, String)> {
-    let mut items: Vec<(Sample, String)> = map
-        .outlines
-        .iter()
-        .enumerate()
-        .map(|(index, outline)| (Sample::Line(plate_stroke(index)), outline.name.clone()))
-        .collect();
-    if !map.bolts.is_empty() {
-        items.push((Sample::Ring(HOLE), "hole".into()));
-        items.push((Sample::Ring(HEAD), "head or washer".into()));
-    }
-    if map.bolts.iter().any(|bolt| bolt.contact_radius.is_some()) {
-        items.push((Sample::Ring(CONTACT), "edge of contact".into()));
-    }
-    if map.heated.is_some() {
-        items.push((Sample::Line(HEATED), "heated zone".into()));
-    }
-    let under = |value: &f64| value * map.factor < colours.low * (1.0 - 1e-9);
-    let lightest = Sample::Patch(ramp::colour(0.0));
-    if colours.spread == Spread::Linear && map.values.contains(&0.0) {
-        items.push((lightest, format!("no {}", map.quantity)));
-    } else if colours.spread == Spread::Logarithmic && map.values.iter().any(under) {
-        let text = format!("below {} {}", axis::plain(colours.low), map.unit);
-        items.push((lightest, text));
-    }
-    items
 }
 
 fn grown(frame: Frame, by: f64) -> Frame {

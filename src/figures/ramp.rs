@@ -1,19 +1,32 @@
-//! The colours of a field: our own ramp from straw through sea green to night blue.
+//! The colours of a field: our own ramps, one from straw through sea green to night blue, one from
+//! paper through ochre to umber.
 //!
 //! Control points stand in CIELAB (CIE 1976, D65) on a falling lightness; a Catmull–Rom curve
 //! joins them and is walked in equal steps of colour difference ΔE*ab. Lightness falls all the
-//! way, so the ramp reads in grey print and to every kind of colour vision; paper takes little
-//! ink where there is little to show.
+//! way, so a ramp reads in grey print and to every kind of colour vision; paper takes little
+//! ink where there is little to show. The two part along blue against yellow, which all but the
+//! rarest kind of colour vision keep apart.
 
 use std::sync::OnceLock;
 
 use crate::figures::sheet::Colour;
 
-/// Number of colours of the ramp; one more index of a picture means "nothing here".
+/// Number of colours of a ramp; one more index of a picture means "nothing here".
 pub(super) const STEPS: usize = 255;
 
+/// The colours of a map.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Ramp {
+    /// Straw, sea green, night blue: what presses or conducts.
+    Sea,
+    /// Paper, ochre, umber: what stands open; paper white is shut.
+    Umber,
+}
+
 /// Lightness and the two colour axes, light to dark.
-const CONTROL: [[f64; 3]; 6] = [
+type Control = [[f64; 3]; 6];
+
+const SEA: Control = [
     [97.0, -1.0, 7.0],
     [81.6, -16.0, 14.0],
     [66.2, -27.0, 2.0],
@@ -22,18 +35,40 @@ const CONTROL: [[f64; 3]; 6] = [
     [20.0, 16.0, -36.0],
 ];
 
-/// The colours, light to dark.
-pub(super) fn colours() -> &'static [Colour; STEPS] {
-    static COLOURS: OnceLock<[Colour; STEPS]> = OnceLock::new();
-    COLOURS.get_or_init(|| {
-        let path = even_path();
-        std::array::from_fn(|step| rgb(path[step]))
-    })
+/// Ends lighter than the other, so that ink still shows on it.
+const UMBER: Control = [
+    [100.0, 0.0, 0.0],
+    [88.0, 3.0, 20.0],
+    [74.0, 9.0, 37.0],
+    [59.0, 17.0, 40.0],
+    [44.0, 19.0, 31.0],
+    [29.0, 14.0, 17.0],
+];
+
+impl Ramp {
+    /// The colours, light to dark.
+    pub(super) fn colours(self) -> &'static [Colour; STEPS] {
+        static SEA_COLOURS: OnceLock<[Colour; STEPS]> = OnceLock::new();
+        static UMBER_COLOURS: OnceLock<[Colour; STEPS]> = OnceLock::new();
+        let (colours, control) = match self {
+            Self::Sea => (&SEA_COLOURS, &SEA),
+            Self::Umber => (&UMBER_COLOURS, &UMBER),
+        };
+        colours.get_or_init(|| {
+            let path = even_path(control);
+            std::array::from_fn(|step| rgb(path[step]))
+        })
+    }
+
+    /// The colour of a share of the range, 0 to 1.
+    pub(super) fn colour(self, share: f64) -> Colour {
+        self.colours()[step(share)]
+    }
 }
 
-/// The colour of a share of the range, 0 to 1.
+/// The colour of a share of the range, 0 to 1, on the ramp of curves and pressures.
 pub(super) fn colour(share: f64) -> Colour {
-    colours()[step(share)]
+    Ramp::Sea.colour(share)
 }
 
 /// The step of a share of the range.
@@ -42,9 +77,11 @@ pub(super) fn step(share: f64) -> usize {
 }
 
 /// Places in CIELAB at equal colour differences along the curve.
-fn even_path() -> Vec<[f64; 3]> {
+fn even_path(control: &Control) -> Vec<[f64; 3]> {
     const FINE: usize = 4000;
-    let fine: Vec<[f64; 3]> = (0..=FINE).map(|k| curve(k as f64 / FINE as f64)).collect();
+    let fine: Vec<[f64; 3]> = (0..=FINE)
+        .map(|k| curve(control, k as f64 / FINE as f64))
+        .collect();
     let mut walked = vec![0.0];
     for pair in fine.windows(2) {
         walked.push(walked[walked.len() - 1] + difference(pair[0], pair[1]));
@@ -58,13 +95,13 @@ fn even_path() -> Vec<[f64; 3]> {
         .collect()
 }
 
-fn curve(share: f64) -> [f64; 3] {
-    let last = CONTROL.len() - 1;
+fn curve(control: &Control, share: f64) -> [f64; 3] {
+    let last = control.len() - 1;
     let place = share * last as f64;
     let left = (place as usize).min(last - 1);
     let u = place - left as f64;
     let knot =
-        |offset: usize, axis: usize| CONTROL[(left + offset).saturating_sub(1).min(last)][axis];
+        |offset: usize, axis: usize| control[(left + offset).saturating_sub(1).min(last)][axis];
     std::array::from_fn(|axis| {
         let [p, q, r, s] = std::array::from_fn(|offset| knot(offset, axis));
         q + 0.5 * u * (r - p + u * (2.0 * p - 5.0 * q + 4.0 * r - s + u * (3.0 * (q - r) + s - p)))
@@ -106,6 +143,7 @@ fn rgb([lightness, a, b]: [f64; 3]) -> Colour {
 #[cfg(test)]
 mod tests {
     use super::*;
+    use crate::figures::sheet::PAPER;
 
     /// Relative luminance as grey print and every kind of colour vision sees the order of colours.
     fn luminance(Colour(r, g, b): Colour) -> f64 {
@@ -121,20 +159,38 @@ mod tests {
     }
 
     #[test]
-    fn the_ramp_darkens_all_the_way() {
+    fn the_ramps_darken_all_the_way() {
         // Rounding to eight bits may hold two neighbours level, so every fourth step is compared.
-        for pair in colours().iter().step_by(4).collect::<Vec<_>>().windows(2) {
-            assert!(luminance(*pair[1]) < luminance(*pair[0]), "{pair:?}");
+        for ramp in [Ramp::Sea, Ramp::Umber] {
+            let steps: Vec<_> = ramp.colours().iter().step_by(4).collect();
+            for pair in steps.windows(2) {
+                assert!(luminance(*pair[1]) < luminance(*pair[0]), "{pair:?}");
+            }
         }
     }
 
     #[test]
     fn steps_of_the_ramp_look_equal() {
-        let path = even_path();
-        let steps: Vec<f64> = path.windows(2).map(|p| difference(p[0], p[1])).collect();
-        let mean = steps.iter().sum::<f64>() / steps.len() as f64;
-        // The fine walk quantises a step of about sixteen fine ones, so a tenth is its resolution.
-        assert!(steps.iter().all(|s| (s - mean).abs() < 0.1 * mean));
+        for control in [&SEA, &UMBER] {
+            let path = even_path(control);
+            let steps: Vec<f64> = path.windows(2).map(|p| difference(p[0], p[1])).collect();
+            let mean = steps.iter().sum::<f64>() / steps.len() as f64;
+            // The fine walk quantises a step of about sixteen fine ones, so a tenth is its
+            // resolution.
+            assert!(steps.iter().all(|s| (s - mean).abs() < 0.1 * mean));
+        }
+    }
+
+    #[test]
+    fn no_colour_of_one_ramp_could_be_of_the_other() {
+        // Away from the pale ends blue leads or keeps up with red on one ramp, red on the other.
+        for step in STEPS / 4..STEPS {
+            let Colour(r, _, b) = Ramp::Sea.colours()[step];
+            assert!(b >= r, "step {step} of the sea");
+            let Colour(r, _, b) = Ramp::Umber.colours()[step];
+            assert!(r > b.saturating_add(25), "step {step} of umber");
+        }
+        assert_eq!(Ramp::Umber.colour(0.0), PAPER);
     }
 
     #[test]

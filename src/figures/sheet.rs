@@ -142,9 +142,9 @@ impl Sheet {
     /// A closed line with sharp corners.
     pub(super) fn closed_within(&mut self, frame: Frame, points: &[[f64; 2]], stroke: Stroke) {
         const STRAIGHT: f64 = 1e-9;
-        let [first, second, ..] = points else {
+        if points.len() < 2 {
             return;
-        };
+        }
         let upright = (0..points.len()).all(|k| {
             let (a, b) = (points[k], points[(k + 1) % points.len()]);
             (a[0] - b[0]).abs().min((a[1] - b[1]).abs()) < STRAIGHT
@@ -173,11 +173,19 @@ impl Sheet {
             }
             return;
         }
-        // The seam lies in the middle of a side, so that every corner is a joint.
-        let seam = [0, 1].map(|axis| f64::midpoint(first[axis], second[axis]));
+        // The seam lies in the middle of a side, so that every corner is a joint, and on a sloping
+        // one, where the pixel backend shows no step between the two halves.
+        let count = points.len();
+        let slopes = |k: &usize| {
+            let (a, b) = (points[*k], points[(*k + 1) % count]);
+            (a[0] - b[0]).abs().min((a[1] - b[1]).abs()) >= STRAIGHT
+        };
+        let from = (0..count).find(slopes).unwrap_or(0);
+        let to = (from + 1) % count;
+        let seam = [0, 1].map(|axis| f64::midpoint(points[from][axis], points[to][axis]));
         let mut path = vec![seam];
-        path.extend_from_slice(&points[1..]);
-        path.extend([*first, seam]);
+        path.extend((0..count).map(|k| points[(to + k) % count]));
+        path.push(seam);
         self.line_within(frame, &path, stroke);
     }
 

@@ -6,8 +6,8 @@ use proptest::prelude::*;
 use crate::{
     estimate::{Band, TorquePoint, TorqueSweep},
     figures::{
-        CumulativePlot, Curve, Drawing, PlanBolt, PlanMap, PlanOutline, PlanShape, RadiusMark,
-        Scale,
+        CumulativePlot, Curve, DetailKind, Drawing, PlanBolt, PlanDetail, PlanMap, PlanOutline,
+        PlanPair, PlanShape, RadiusMark, Ramp, Scale,
         clip::Frame,
         lettering::{Anchor, Lettering, Turn},
         sheet as draw,
@@ -80,6 +80,7 @@ fn plan(window: [f64; 2], factor: f64, scale: Scale, bolts: usize) -> PlanMap {
         unit: "MPa".into(),
         factor: 1.0,
         scale,
+        ramp: Ramp::Sea,
         outlines: vec![PlanOutline {
             name: "base plate".into(),
             shape: PlanShape::Rectangle {
@@ -98,7 +99,29 @@ fn plan(window: [f64; 2], factor: f64, scale: Scale, bolts: usize) -> PlanMap {
                 contact_radius: Some(4e-3),
             })
             .collect(),
+        details: vec![PlanDetail {
+            kind: DetailKind::Foot,
+            shape: PlanShape::Rectangle {
+                corner: [0.0, 0.0],
+                size: window.map(|side| side / 4.0),
+            },
+        }],
         heated: None,
+        contact: Vec::new(),
+    }
+}
+
+/// A pressure map with a gap map that grows from zero to `factor`, µm.
+fn pair(window: [f64; 2], factor: f64, bolts: usize) -> PlanPair {
+    let pressure = plan(window, 30.0, Scale::Linear, bolts);
+    PlanPair {
+        gap: PlanMap {
+            quantity: "gap".into(),
+            unit: "µm".into(),
+            ramp: Ramp::Umber,
+            ..plan(window, factor, Scale::Linear, bolts)
+        },
+        pressure,
     }
 }
 
@@ -152,13 +175,34 @@ proptest! {
     }
 
     #[test]
+    fn texts_of_pairs_are_clear(
+        width in -3.0..0.5_f64,
+        aspect in -1.5..1.5_f64,
+        size in -12.0..12.0_f64,
+        bolts in 0..12_usize,
+    ) {
+        let window = [10_f64.powf(width), 10_f64.powf(width + aspect)];
+        let pair = pair(window, 10_f64.powf(size), bolts);
+        let sheet = draw(&Drawing::PressureAndGap(Box::new(pair))).unwrap();
+        prop_assert_eq!(texts_are_clear(&sheet), Ok(()));
+    }
+
+    #[test]
     fn texts_of_sweeps_are_clear(
         stated in 0.1..4.0_f64,
         largest in 0.1..5.0_f64,
         required in 0.01..100.0_f64,
         size in -9.0..9.0_f64,
     ) {
-        let sheet = draw(&Drawing::Torque(sweep(stated, largest, required, 10_f64.powf(size))));
+        let mut sweep = sweep(stated, largest, required, 10_f64.powf(size));
+        let sheet = draw(&Drawing::Torque(sweep.clone()));
+        prop_assert_eq!(texts_are_clear(&sheet.unwrap()), Ok(()));
+        // With a best torque inside the window there is one more label.
+        for point in &mut sweep.points {
+            point.source_to_sink.nominal *= 1.0 + point.torque;
+        }
+        sweep.best = Some(stated.min(largest) / 2.0);
+        let sheet = draw(&Drawing::Torque(sweep));
         prop_assert_eq!(texts_are_clear(&sheet.unwrap()), Ok(()));
     }
 
@@ -237,6 +281,17 @@ proptest! {
                 })
                 .collect(),
             heated: Some(PlanShape::Rectangle { corner: [n(40), n(41)], size: [n(42), n(43)] }),
+            details: [DetailKind::CutOut, DetailKind::Foot, DetailKind::Rib]
+                .into_iter()
+                .enumerate()
+                .map(|(k, kind)| PlanDetail {
+                    kind,
+                    shape: PlanShape::Polygon(
+                        (0..4).map(|p| [n(52 + k + 2 * p), n(53 + k + 2 * p)]).collect(),
+                    ),
+                })
+                .collect(),
+            contact: vec![(0..6).map(|p| [n(p), n(p + 9)]).collect()],
             ..plan([1.0, 1.0], 1.0, Scale::Logarithmic, 0)
         };
         let plot = CumulativePlot {
@@ -255,7 +310,8 @@ proptest! {
         torque.points[3].torque = n(49);
         torque.points[5].contact.high = Some(n(50));
         torque.points[6].source_to_sink.nominal = n(51);
-        for drawing in [Drawing::Plan(map), Drawing::Cumulative(plot), Drawing::Torque(torque)] {
+        let twice = PlanPair { pressure: map.clone(), gap: map.clone() };
+        for drawing in [Drawing::Plan(map), Drawing::PressureAndGap(Box::new(twice)), Drawing::Cumulative(plot), Drawing::Torque(torque)] {
             // An error is as good as a figure; only a panic is not.
             let _ = svg(&drawing);
         }

@@ -14,6 +14,7 @@ use crate::{
         sheet::{ACCENT, Colour, INK, LABEL, NARROW, Sheet, Stroke, WIDE},
     },
     joint::Limit,
+    report::sweep::worse,
 };
 
 const MARGIN: f64 = 20.0;
@@ -253,6 +254,18 @@ fn torque_flags(
         text: format!("stated {} N\u{a0}m", axis::plain(sweep.stated)),
         stroke: STATED,
     }];
+    if let Some(best) = worse(sweep).map(|worse| worse.beyond)
+        && (x_axis.low..=x_axis.high).contains(&best)
+    {
+        flags.push(Flag {
+            x: across(best),
+            text: format!("best {} N\u{a0}m, worse beyond", axis::plain(best)),
+            stroke: Stroke {
+                width: 0.8,
+                ..nominal()
+            },
+        });
+    }
     if let Some((largest, limit)) = sweep.largest {
         let largest = drawable(largest, "the largest torque")?;
         if (x_axis.low..=x_axis.high).contains(&largest) {

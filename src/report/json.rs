@@ -11,6 +11,10 @@ use crate::{
 };
 use serde_json::{Map, Value, json};
 
+mod pressure;
+
+pub(super) use pressure::differences;
+
 /// Number of the file format and of this contract.
 pub const FORMAT: u32 = 1;
 
@@ -64,23 +68,12 @@ fn worst(estimate: &Estimate) -> Value {
 /// The part of the contract that one thermal case fills.
 fn case(case: &CaseResult) -> Map<String, Value> {
     let results = &case.results;
-    let pressure = &case.pressure;
     let mut object = Map::new();
     for (key, value) in [
         ("case", json!(case.name)),
         ("sink_temperature", json!(case.sink_temperature)),
         ("bolts", case.bolts.iter().map(bolt).collect()),
-        (
-            "pressure",
-            json!({
-                "peak": pressure.peak,
-                "contact_area": pressure.contact_area,
-                "radius_95": pressure.radius_95,
-                "force": pressure.force,
-                "gap_max": pressure.gap_max,
-                "gap_mean": pressure.gap_mean,
-            }),
-        ),
+        ("pressure", pressure::pressure(case)),
         ("footprint", json!(case.footprint)),
         (
             "results",

@@ -11,6 +11,45 @@ use crate::{
 };
 use std::fmt::Write;
 
+/// Share by which the nominal resistance must rise past the best torque to be called worse: less
+/// is within what the fields themselves leave open.
+const WORSE: f64 = 0.005;
+
+/// Where more torque makes the joint worse although strength allows it.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Worse {
+    /// The thermally best torque, N m.
+    pub beyond: f64,
+    /// Torque of the largest resistance past the best one that strength allows, N m.
+    pub at: f64,
+    /// How far source to sink lies above the lowest there, as a share of the lowest.
+    pub rise: f64,
+}
+
+/// The rise of source to sink past the best torque; none where more torque never costs much.
+///
+/// In gas or thin paste the gap between the bolts grows with the force, so that the curve may have
+/// its lowest point inside the window. A joint that must resist is never worse for resisting more.
+pub fn worse(sweep: &TorqueSweep) -> Option<Worse> {
+    if matches!(sweep.required, Some((_, Limit::Least))) {
+        return None;
+    }
+    let beyond = sweep.best?;
+    let nominal = |point: &TorquePoint| point.source_to_sink.nominal;
+    let best = sweep.points.iter().find(|point| point.torque >= beyond)?;
+    let worst = sweep
+        .points
+        .iter()
+        .filter(|point| point.passes && point.torque > beyond)
+        .max_by(|one, other| nominal(one).total_cmp(&nominal(other)))?;
+    let rise = nominal(worst) / nominal(best) - 1.0;
+    (rise > WORSE).then_some(Worse {
+        beyond,
+        at: worst.torque,
+        rise,
+    })
+}
+
 /// The sweep as a table with the stated, the best and the largest torque marked.
 pub fn torque(sweep: &TorqueSweep) -> String {
     let stated = nearest(sweep, sweep.stated);
@@ -111,10 +150,20 @@ fn advice(sweep: &TorqueSweep, best: Option<usize>, stated: Option<usize>) -> St
         let gain = 1.0 - point.source_to_sink.nominal / there;
         format!(", {} below the stated torque", percent(gain))
     });
-    format!(
+    let mut text = format!(
         "best     {} N·m: lowest source to sink that strength allows here{gain}\n",
         four(point.torque)
-    )
+    );
+    if let Some(Worse { beyond, at, rise }) = worse(sweep) {
+        let _ = writeln!(
+            text,
+            "worse    more torque makes it worse beyond {} N·m: {} above the lowest at {} N·m",
+            four(beyond),
+            percent(rise),
+            four(at)
+        );
+    }
+    text
 }
 
 fn row(point: &TorquePoint, marks: &str) -> Vec<String> {

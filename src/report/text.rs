@@ -14,6 +14,7 @@ use crate::{
 use anstyle::{AnsiColor, Style};
 use std::fmt::Write;
 
+mod pressure;
 mod thermal;
 
 /// Widest line, characters.
@@ -39,7 +40,7 @@ pub fn estimate(estimate: &Estimate) -> String {
 pub fn estimate_at(estimate: &Estimate, detail: Detail) -> String {
     let mut parts = vec![heading(estimate)];
     if let Some(case) = estimate.cases.first() {
-        parts.push(bolts(case));
+        parts.push(bolts(case, detail));
         parts.push(thermal::results(case));
         parts.push(thermal::verdict(estimate, case));
         if estimate.cases.len() > 1 {
@@ -92,8 +93,8 @@ fn wrapped_after(line: &str, label: usize) -> String {
     format!("{head}{}", body.replace('\n', &indent))
 }
 
-/// Clamp force, one row for all bolts that share it.
-fn bolts(case: &CaseResult) -> String {
+/// Clamp force, one row for all bolts that share it, and the pressure that comes of it.
+fn bolts(case: &CaseResult, detail: Detail) -> String {
     let mut rows = Vec::new();
     for (name, group) in groups(&case.bolts) {
         let bolt = group[0];
@@ -127,23 +128,7 @@ fn bolts(case: &CaseResult) -> String {
         ],
         &rows,
     );
-    let pressure = &case.pressure;
-    let _ = write!(
-        text,
-        "pressure: {} MPa at most, contact on {} mm², 95 % of the force within {} mm of a bolt axis",
-        four(pressure.peak / 1e6),
-        four(pressure.contact_area * 1e6),
-        four(pressure.radius_95 * 1e3),
-    );
-    if let (Some(max), Some(mean)) = (pressure.gap_max, pressure.gap_mean) {
-        let _ = write!(
-            text,
-            "; gap {} µm mean, {} µm widest",
-            four(mean * 1e6),
-            four(max * 1e6)
-        );
-    }
-    text.push('\n');
+    text.push_str(&pressure::field(case, detail));
     text
 }
 

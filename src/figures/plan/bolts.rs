@@ -3,7 +3,10 @@
 use crate::figures::{
     clip::Frame,
     lettering::{Anchor, Lettering},
-    plan::{CONTACT, HEAD, HOLE, LARGEST, PlanBolt, View, grown},
+    plan::{
+        LARGEST, PlanBolt, View, grown,
+        parts::{CONTACT, HEAD, HOLE},
+    },
     sheet::{INK, LABEL, NARROW, PAPER, Sheet, Stroke, WIDE, circle},
 };
 
@@ -32,7 +35,8 @@ pub(super) fn draw(sheet: &mut Sheet, view: &View, bolt: &PlanBolt) {
         ring(sheet, bolt.head_radius, HALO);
     }
     ring(sheet, bolt.head_radius, HEAD);
-    sheet.area(frame.area(&circle(centre, radius(bolt.hole_radius))), PAPER);
+    let hole = circle(centre, radius(bolt.hole_radius));
+    sheet.area(frame.area(&hole), view.ground.unwrap_or(PAPER));
     ring(sheet, bolt.hole_radius, if large { HOLE } else { HEAD });
     let radii = [radius(bolt.hole_radius), radius(bolt.head_radius)];
     centre_mark(sheet, frame, centre, radii);

@@ -3,7 +3,7 @@
 use crate::figures::{
     axis::Axis,
     picture::{NOTHING, Picture},
-    plan::{PlanMap, PlanShape, View},
+    plan::{DetailKind, PlanMap, PlanShape, View},
     ramp,
 };
 
@@ -34,6 +34,8 @@ pub(super) fn picture(map: &PlanMap, view: &View, colours: &Axis) -> Picture {
         place: view.frame,
         size,
         indices,
+        ramp: map.ramp,
+        ground: view.ground,
     }
 }
 
@@ -48,6 +50,8 @@ enum Kind {
 /// The field with what is needed to cut it.
 struct Field<'a> {
     map: &'a PlanMap,
+    /// Whether drawn circles part cells of zero from the others; a solved field runs out smoothly.
+    parted: bool,
     /// For each cell with a neighbour of another kind, what parts the cells around it.
     borders: Vec<Option<Border>>,
 }
@@ -66,7 +70,13 @@ impl<'a> Field<'a> {
             .bolts
             .iter()
             .filter_map(|bolt| Some((bolt.at, bolt.contact_radius?)));
-        let mut edges: Vec<PlanShape> = map.outlines.iter().map(|o| o.shape.clone()).collect();
+        let details = map.details.iter().filter(|d| d.kind != DetailKind::Rib);
+        let mut edges: Vec<PlanShape> = map
+            .outlines
+            .iter()
+            .map(|outline| outline.shape.clone())
+            .chain(details.map(|detail| detail.shape.clone()))
+            .collect();
         edges.extend(
             holes
                 .chain(contacts)
@@ -74,6 +84,7 @@ impl<'a> Field<'a> {
         );
         let mut field = Self {
             map,
+            parted: map.bolts.iter().any(|bolt| bolt.contact_radius.is_some()),
             borders: Vec::new(),
         };
         let [columns, rows] = map.size.map(|k| k as i64);
@@ -180,7 +191,7 @@ impl<'a> Field<'a> {
     fn kind(&self, cell: [i64; 2]) -> Kind {
         match self.value(cell) {
             None => Kind::Nothing,
-            Some(0.0) => Kind::Zero,
+            Some(0.0) if self.parted => Kind::Zero,
             Some(_) => Kind::Value,
         }
     }
