@@ -6,9 +6,7 @@ mod plates;
 use crate::{catalog, diagnostic::Assumption};
 
 pub use flatness_map::FlatnessMap;
-pub use plates::{
-    Bimetal, Coating, Feet, Finish, Outline, Patch, Plate, Rib, Sag,
-};
+pub use plates::{Bimetal, Coating, Feet, Finish, Outline, Patch, Plate, Rib, Sag};
 
 /// Everything the chain needs to know of one joint. Lengths in m, every other value in SI.
 ///

@@ -4,7 +4,6 @@ use crate::{
     diagnostic::Fault,
     joint::{
         collector::{Collector, Wording, fault},
-        geometry::depth_at,
         plates::PlateDraft,
         tree::Span,
     },
@@ -50,7 +49,8 @@ pub(super) fn fit(site: &Site, plates: &[PlateDraft; 2], collector: &mut Collect
 
 fn beyond(land: Land, index: usize, point: [f64; 2], plate: &PlateDraft) -> Option<Fault> {
     let (outline, origin) = plate.placed()?;
-    let depth = depth_at(outline, origin, point);
+    let own = [point[0] - origin[0], point[1] - origin[1]];
+    let depth = outline.depth(own);
     if depth + SLACK < land.holes[index] {
         return Some(
             fault(
@@ -74,7 +74,20 @@ fn beyond(land: Land, index: usize, point: [f64; 2], plate: &PlateDraft) -> Opti
     } else {
         "nut"
     };
-    (depth + SLACK < seat).then(|| {
+    if depth + SLACK >= seat {
+        let parts = plate.parts.as_ref()?;
+        let told = parts.clash(own, land.holes[index], (part, seat))?;
+        return Some(Fault {
+            message: format!(
+                "{}: {} in plate `{}`",
+                told.message,
+                shown(point),
+                plate.name
+            ),
+            ..told
+        });
+    }
+    Some(
         fault(
             "plate/head-beyond-edge",
             &(0..0),
@@ -87,8 +100,8 @@ fn beyond(land: Land, index: usize, point: [f64; 2], plate: &PlateDraft) -> Opti
         .expecting(format!(
             "expected at least {} from the edge",
             units::show(seat, Quantity::Length)
-        ))
-    })
+        )),
+    )
 }
 
 /// No two holes, heads or nuts may share the same land.

@@ -26,7 +26,12 @@ pub fn area(points: &[Point]) -> f64 {
 /// Left, lower, right and upper bound; of no points an empty range.
 pub fn bounds(points: &[Point]) -> [f64; 4] {
     points.iter().fold(
-        [f64::INFINITY, f64::INFINITY, f64::NEG_INFINITY, f64::NEG_INFINITY],
+        [
+            f64::INFINITY,
+            f64::INFINITY,
+            f64::NEG_INFINITY,
+            f64::NEG_INFINITY,
+        ],
         |[left, lower, right, upper], [x, y]| {
             [left.min(*x), lower.min(*y), right.max(*x), upper.max(*y)]
         },
@@ -63,13 +68,18 @@ pub fn distance([from, to]: [Point; 2], point: Point) -> f64 {
     (away[0] - share * along[0]).hypot(away[1] - share * along[1])
 }
 
-/// Whether two segments cross in a point inside both.
-pub fn cross(one: [Point; 2], other: [Point; 2]) -> bool {
+/// Whether two segments cross, each with both ends farther than a reach from the line of the other.
+pub fn cross(one: [Point; 2], other: [Point; 2], reach: f64) -> bool {
     let side = |[from, to]: [Point; 2], point: Point| {
-        (to[0] - from[0]) * (point[1] - from[1]) - (to[1] - from[1]) * (point[0] - from[0])
+        let along = [to[0] - from[0], to[1] - from[1]];
+        let area = along[0] * (point[1] - from[1]) - along[1] * (point[0] - from[0]);
+        area / along[0].hypot(along[1])
     };
-    side(one, other[0]) * side(one, other[1]) < 0.0
-        && side(other, one[0]) * side(other, one[1]) < 0.0
+    let splits = |edge: [Point; 2], ends: [Point; 2]| {
+        let [first, second] = ends.map(|end| side(edge, end));
+        first * second < 0.0 && first.abs().min(second.abs()) > reach
+    };
+    splits(one, other) && splits(other, one)
 }
 
 /// Whether two segments come within a distance of each other.
@@ -83,7 +93,7 @@ pub fn meet(one: [Point; 2], other: [Point; 2], reach: f64) -> bool {
         high + reach < least || most + reach < low
     });
     !apart
-        && (cross(one, other)
+        && (cross(one, other, 0.0)
             || other.iter().any(|point| distance(one, *point) <= reach)
             || one.iter().any(|point| distance(other, *point) <= reach))
 }
@@ -164,7 +174,12 @@ mod tests {
     fn bounds_hold_every_corner() {
         let found = bounds(&ELL);
         let expected = [0.0, 0.0, 2.0, 2.0];
-        assert!(found.iter().zip(expected).all(|(one, other)| (one - other).abs() < ROUNDING));
+        assert!(
+            found
+                .iter()
+                .zip(expected)
+                .all(|(one, other)| (one - other).abs() < ROUNDING)
+        );
     }
 
     #[test]
@@ -190,7 +205,12 @@ mod tests {
 
     #[test]
     fn segments_that_share_an_end_do_not_cross() {
-        assert!(!cross([[0.0, 0.0], [1.0, 1.0]], [[1.0, 1.0], [2.0, 0.0]]));
-        assert!(cross([[0.0, 0.0], [1.0, 1.0]], [[0.0, 1.0], [1.0, 0.0]]));
+        assert!(!cross(
+            [[0.0, 0.0], [1.0, 1.0]],
+            [[1.0, 1.0], [2.0, 0.0]],
+            0.0
+        ));
+        let crossing = |reach| cross([[0.0, 0.0], [1.0, 1.0]], [[0.0, 1.0], [1.0, 0.0]], reach);
+        assert!(crossing(0.0) && crossing(0.7) && !crossing(0.71));
     }
 }

@@ -1,8 +1,8 @@
 //! A surface through points in the plane, on a grid or scattered.
 
 use spade::{
-    DelaunayTriangulation, HasPosition, HierarchyHintGenerator, Point2, Triangulation as _,
-    mitigate_underflow,
+    DelaunayTriangulation, FloatTriangulation as _, HasPosition, HierarchyHintGenerator, Point2,
+    Triangulation as _, mitigate_underflow,
 };
 
 /// Coordinates nearer than this share of the extent are one line of a grid.
@@ -293,13 +293,18 @@ mod tests {
         assert!((surface.at([0.1, 0.1]) - 2e-5).abs() < ROUNDING);
         assert!((surface.at([0.3, -0.1]) - 1e-5).abs() < ROUNDING);
         // Continuous over the hull: a nanometre moves the height by less than 1e-12.
-        let (inside, outside) = (surface.at([0.05 - 1e-9, 0.05]), surface.at([0.05 + 1e-9, 0.05]));
+        let (inside, outside) = (
+            surface.at([0.05 - 1e-9, 0.05]),
+            surface.at([0.05 + 1e-9, 0.05]),
+        );
         assert!((inside - outside).abs() < 1e-12);
     }
 
     #[test]
     fn points_that_span_nothing_are_refused() {
-        let line: Vec<[f64; 3]> = (0..5).map(|at| [f64::from(at), f64::from(at), 0.0]).collect();
+        let line: Vec<[f64; 3]> = (0..5)
+            .map(|at| [f64::from(at), f64::from(at), 0.0])
+            .collect();
         assert!(Surface::through(line).is_none());
         assert!(Surface::through(vec![[0.0, 0.0, 0.0], [1.0, 0.0, 0.0]]).is_none());
         assert!(Surface::through(Vec::new()).is_none());

@@ -145,4 +145,3 @@ pub struct Coating {
     /// Thickness, m.
     pub thickness: f64,
 }
-
