@@ -44,7 +44,8 @@ fn sets(text: &str) -> Vec<String> {
 
 /// Tables stand beside the broken files.
 fn table(name: &str) -> Result<String, String> {
-    fs::read_to_string(folder("tests/faults").join(name)).map_err(|_| "there is no such file".into())
+    fs::read_to_string(folder("tests/faults").join(name))
+        .map_err(|_| "there is no such file".into())
 }
 
 fn faults(name: &str, text: &str) -> Faults {

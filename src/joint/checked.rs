@@ -10,8 +10,8 @@ pub use plates::{Bimetal, Coating, Feet, Finish, Outline, Patch, Plate, Rib, Sag
 
 /// Everything the chain needs to know of one joint. Lengths in m, every other value in SI.
 ///
-/// Plan coordinates are those of the first plate: from its lower left corner, or from its centre
-/// when it is round. The first plate is the warm side and lies on top.
+/// Plan coordinates are those of the first plate: from its lower left corner, from its centre when
+/// it is round, or as the points of its outline. The first plate is the warm side and lies on top.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Joint {
     /// Title, as the file gives it.

@@ -4,6 +4,7 @@ use crate::{
     diagnostic::Fault,
     joint::{
         collector::{Collector, Wording, fault},
+        patches::Passing,
         plates::PlateDraft,
         tree::Span,
     },
@@ -64,7 +65,8 @@ fn beyond(land: Land, index: usize, point: [f64; 2], plate: &PlateDraft) -> Opti
             )
             .expecting(format!("expected on plate `{}`", plate.name))
             .help(
-                "`at` is measured from the lower left corner of the first plate (round: its centre)",
+                "`at` is measured from the lower left corner of the first plate (round: its \
+                 centre; outline: as its points)",
             ),
         );
     }
@@ -76,15 +78,13 @@ fn beyond(land: Land, index: usize, point: [f64; 2], plate: &PlateDraft) -> Opti
     };
     if depth + SLACK >= seat {
         let parts = plate.parts.as_ref()?;
-        let told = parts.clash(own, land.holes[index], (part, seat))?;
-        return Some(Fault {
-            message: format!(
-                "{}: {} in plate `{}`",
-                told.message,
-                shown(point),
-                plate.name
-            ),
-            ..told
+        return parts.clash(Passing {
+            axis: own,
+            hole: land.holes[index],
+            part,
+            seat,
+            place: &shown(point),
+            plate: &plate.name,
         });
     }
     Some(

@@ -8,7 +8,7 @@ use crate::{
     diagnostic::Fault,
     joint::{
         FlatnessMap, Outline,
-        collector::{Collector, Wording, fault},
+        collector::{Collector, MOST_FAULTS, Wording, fault},
         maps::table::Row,
         record::Record,
         tree::{Span, short},
@@ -105,7 +105,6 @@ fn map(text: &str, outline: Option<&Outline>, faults: &mut Vec<Fault>) -> Option
         return None;
     }
     let rows = table::rows(text, faults);
-    let before = faults.len();
     let whole = 0..text.trim_end().len();
     if rows.len() > MOST_POINTS {
         faults.push(
@@ -123,23 +122,22 @@ fn map(text: &str, outline: Option<&Outline>, faults: &mut Vec<Fault>) -> Option
     if let Some(outline) = outline {
         outside(&rows, outline, faults);
     }
-    for row in &rows {
-        if row.point[2].abs() > HIGHEST {
-            faults.push(
-                fault(
-                    "map/points",
-                    &row.span,
-                    format!(
-                        "a height of {} is no flatness",
-                        units::show(row.point[2], Quantity::Length)
-                    ),
-                )
-                .expecting("expected within 100 mm either way")
-                .help("check the unit of z in the header: `z [µm]`"),
-            );
-        }
+    let high = rows.iter().filter(|row| row.point[2].abs() > HIGHEST);
+    for row in high.take(MOST_FAULTS) {
+        faults.push(
+            fault(
+                "map/points",
+                &row.span,
+                format!(
+                    "a height of {} is no flatness",
+                    units::show(row.point[2], Quantity::Length)
+                ),
+            )
+            .expecting("expected within 100 mm either way")
+            .help("check the unit of z in the header: `z [µm]`"),
+        );
     }
-    if faults.len() > before || !faults.is_empty() {
+    if !faults.is_empty() {
         return None;
     }
     let count = rows.len();
@@ -164,31 +162,21 @@ fn map(text: &str, outline: Option<&Outline>, faults: &mut Vec<Fault>) -> Option
 
 /// Tells of points that stand twice in plan.
 fn twice(rows: &[Row], faults: &mut Vec<Fault>) {
-    let mut order: Vec<usize> = (0..rows.len()).collect();
-    order.sort_by(|one, other| {
-        let [one, other] = [rows[*one].point, rows[*other].point];
-        one[0]
-            .total_cmp(&other[0])
-            .then(one[1].total_cmp(&other[1]))
-    });
-    for (place, index) in order.iter().enumerate() {
-        let point = rows[*index].point;
-        let near = order[place + 1..]
-            .iter()
-            .take_while(|next| rows[**next].point[0] - point[0] <= SAME_PLACE)
-            .find(|next| (rows[**next].point[1] - point[1]).abs() <= SAME_PLACE);
-        if let Some(next) = near {
-            let (first, second) = (*index.min(next), *index.max(next));
-            faults.push(
-                fault(
-                    "map/points",
-                    &rows[second].span,
-                    format!("this point stands already on line {}", rows[first].line),
-                )
-                .expecting("expected each point once")
-                .help("keep one of the two, or their mean"),
-            );
-        }
+    let cell = |row: &Row| [row.point[0], row.point[1]].map(|at| (at / SAME_PLACE).round() as i64);
+    let mut order: Vec<(&Row, [i64; 2])> = rows.iter().map(|row| (row, cell(row))).collect();
+    // A stable sort keeps equal places in the order of the lines.
+    order.sort_by_key(|(_, cell)| *cell);
+    let pairs = order.windows(2).filter(|pair| pair[0].1 == pair[1].1);
+    for pair in pairs.take(MOST_FAULTS) {
+        faults.push(
+            fault(
+                "map/points",
+                &pair[1].0.span,
+                format!("this point stands already on line {}", pair[0].0.line),
+            )
+            .expecting("expected each point once")
+            .help("keep one of the two, or their mean"),
+        );
     }
 }
 

@@ -320,23 +320,39 @@ fn no_area(span: &Span) -> Fault {
         .help("the smallest outline is a triangle: `outline = [[\"0 mm\", \"0 mm\"], [\"80 mm\", \"0 mm\"], [\"0 mm\", \"60 mm\"]]`")
 }
 
-/// A part of a plate under a bolt: what of a bolt must be clear of what.
+/// A bolt where it passes a plate.
+#[derive(Clone, Copy, Debug)]
+pub(super) struct Passing<'n> {
+    /// Its axis in the plate's own coordinates, m.
+    pub axis: Point,
+    /// Its hole radius, m.
+    pub hole: f64,
+    /// What presses on the outer face: `head` or `nut`.
+    pub part: &'n str,
+    /// Outer radius of that seat, m; zero where there is none.
+    pub seat: f64,
+    /// Its place in the words of the file.
+    pub place: &'n str,
+    /// Name of the plate.
+    pub plate: &'n str,
+}
+
 impl Parts {
-    /// The first fault of a bolt with a hole and a seat at a point in the plate's own coordinates;
-    /// `seat` names head or nut, with its outer radius.
-    pub(super) fn clash(
-        &self,
-        point: Point,
-        hole: f64,
-        (part, seat): (&str, f64),
-    ) -> Option<Fault> {
-        // Deeper than its own radius outside means clear of the part.
-        let touches = |patch: &Patch, radius: f64| patch.depth(point) > SAME_PLACE - radius;
+    /// What of a bolt reaches into a cut-out or onto a rib.
+    pub(super) fn clash(&self, bolt: Passing<'_>) -> Option<Fault> {
+        // Farther away than the radius is clear.
+        let touches = |patch: &Patch, radius: f64| patch.depth(bolt.axis) > SAME_PLACE - radius;
+        let clear = |radius: f64, of: &str| {
+            format!(
+                "expected at least {} from the {of}",
+                units::show(radius, Quantity::Length)
+            )
+        };
         for (cutout, _) in &self.cutouts {
-            let (what, radius) = if touches(cutout, hole) {
-                ("hole", hole)
-            } else if touches(cutout, seat) {
-                (part, seat)
+            let (what, radius) = if touches(cutout, bolt.hole) {
+                ("hole", bolt.hole)
+            } else if touches(cutout, bolt.seat) {
+                (bolt.part, bolt.seat)
             } else {
                 continue;
             };
@@ -344,30 +360,31 @@ impl Parts {
                 fault(
                     "plate/bolt-in-cutout",
                     &(0..0),
-                    format!("the {what} here reaches into a cut-out"),
+                    format!(
+                        "the {what} at {} reaches into a cut-out of plate `{}`",
+                        bolt.place, bolt.plate
+                    ),
                 )
-                .expecting(format!(
-                    "expected at least {} from the cut-out",
-                    units::show(radius, Quantity::Length)
-                ))
+                .expecting(clear(radius, "cut-out"))
                 .help("move the bolt, or make the cut-out smaller"),
             );
         }
-        let rib = self.ribs.iter().find(|(rib, _)| touches(&rib.patch, seat));
-        rib.filter(|_| seat > 0.0).map(|(rib, _)| {
+        let mut ribs = self.ribs.iter().filter(|_| bolt.seat > 0.0);
+        let (rib, _) = ribs.find(|(rib, _)| touches(&rib.patch, bolt.seat))?;
+        Some(
             fault(
                 "plate/head-on-rib",
                 &(0..0),
                 format!(
-                    "the {part} here would stand on a rib, {} above the plate",
-                    units::show(rib.height, Quantity::Length)
+                    "the {} at {} would stand on a rib, {} above plate `{}`",
+                    bolt.part,
+                    bolt.place,
+                    units::show(rib.height, Quantity::Length),
+                    bolt.plate
                 ),
             )
-            .expecting(format!(
-                "expected at least {} from the rib",
-                units::show(seat, Quantity::Length)
-            ))
-            .help("move the bolt or end the rib before it: the seat must lie on the plate itself")
-        })
+            .expecting(clear(bolt.seat, "rib"))
+            .help("move the bolt or end the rib before it: the seat must lie on the plate itself"),
+        )
     }
 }

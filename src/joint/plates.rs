@@ -156,7 +156,7 @@ pub(super) fn read(
                 "the plates do not lie on each other",
             )
             .expecting("expected a place on this plate")
-            .help("`offset` is where the corner (round: the centre) of the first plate lies on the second"),
+            .help("`offset` is where the corner (round: the centre; outline: the origin of its points) of the first plate lies on the second"),
         );
         // Without a place for it, no hole is told to lie beside this plate.
         lower.origin = None;
@@ -315,7 +315,7 @@ pub(super) fn source(upper: &PlateDraft, collector: &mut Collector) -> Option<So
         )
         .expecting("expected inside the plate")
         .help(
-            "`centre` is measured from the lower left corner of the plate (round: from its centre)",
+            "`centre` is measured from the lower left corner of the plate (round: from its centre; outline: as its points)",
         )
     });
     Some(Source {

@@ -9,7 +9,7 @@ pub(super) const ENTRIES: &[Entry] = &[
         "The hole lies outside the plate or cuts its edge. The ring of material that carries the \
          clamp force is then open, and no pressure law for a closed ring holds.",
         "Check the place of the bolt, the size of both plates and the offset between them; places \
-         are measured from the lower left corner of the first plate (round plate: its centre).",
+         are measured from the lower left corner of the first plate (round plate: its centre; outline: as its points).",
     ),
     fault(
         "plate/holes-overlap",

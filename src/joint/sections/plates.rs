@@ -63,7 +63,7 @@ pub static PLATE: Section = Section {
         field(
             "offset",
             Kind::Point,
-            "second plate only: where the corner (round: the centre) of the first plate lies on it",
+            "second plate only: where the corner (round: the centre; outline: the origin of its points) of the first plate lies on it",
             "[\"70 mm\", \"90 mm\"]",
         )
         .within(-100.0, 100.0)

@@ -26,7 +26,7 @@ impl Walk<'_> {
             Form::List(nodes) => nodes.as_slice(),
             Form::Table(entries) if names_tables(entries, section) => {
                 self.collector.report(
-                    wrong_type(stated.node, &format!("`{}`", section.name), "a table")
+                    wrong_type(stated.node, &format!("`{}`", stated.field.key), "a table")
                         .expecting(format!("expected `[[{}]]`", section.name))
                         .help(format!(
                             "head each with `[[{}]]` and put its name inside: `name = \"{}\"`",
@@ -38,7 +38,7 @@ impl Walk<'_> {
             Form::Table(_) => std::slice::from_ref(stated.node),
             _ => {
                 self.collector.report(
-                    wrong_type(stated.node, &format!("`{}`", section.name), "a table").help(
+                    wrong_type(stated.node, &format!("`{}`", stated.field.key), "a table").help(
                         if stated.path == section.name {
                             format!("head it with `[[{}]]`", section.name)
                         } else {
