@@ -15,8 +15,6 @@ mod contact;
 mod fasteners;
 mod filler;
 mod finishes;
-#[cfg(test)]
-mod fixture;
 mod gaps;
 mod geometry;
 mod lands;
@@ -250,3 +248,6 @@ fn assembled(file: &Record, tables: &mut Tables<'_>, collector: &mut Collector) 
     cold::check(&joint, file, collector);
     Some(joint)
 }
+
+#[cfg(test)]
+mod fixture;
