@@ -22,6 +22,18 @@ use crate::{
     resistance::{self, Path},
 };
 
+/// The code under which `explain` tells of fields that the cone cannot carry.
+pub const BEYOND_CONE: &str = "pressure/beyond-cone";
+
+/// Fields beyond the cone in a sentence.
+fn beyond_cone(fields: &[(String, &'static str)]) -> String {
+    let named: Vec<String> = fields
+        .iter()
+        .map(|(field, why)| format!("{field} ({why})"))
+        .collect();
+    named.join(", ")
+}
+
 /// How many draws, from which seed.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub struct Options {
@@ -84,6 +96,9 @@ pub enum Failure {
         /// What failed.
         found: resistance::Failure,
     },
+    /// The joint states what the closed-form cone cannot carry: fields, each with the reason.
+    #[error("the closed-form cone cannot carry {}", beyond_cone(.0))]
+    BeyondCone(Vec<(String, &'static str)>),
     /// The plates could not be cut into networks.
     #[error("the plates cannot be cut into networks: {0}")]
     Plates(#[from] resistance::Failure),

@@ -8,19 +8,24 @@ pub mod checked;
 pub mod fields;
 pub mod sections;
 
+mod beyond_cone;
 mod cold;
 mod collector;
 mod contact;
 mod fasteners;
 mod filler;
 mod finishes;
+mod gaps;
 mod geometry;
 mod lands;
+mod maps;
 mod materials;
 mod overrides;
+mod patches;
 mod patterns;
 mod plates;
 mod record;
+mod sag;
 mod schema;
 mod seats;
 mod service;
@@ -35,6 +40,7 @@ use crate::{
     diagnostic::{self, Colour, Fault},
     joint::{
         collector::{Collector, Wording, fault},
+        maps::Tables,
         record::Record,
         sections::{FILE, FORMAT},
         tree::Node,
@@ -43,6 +49,7 @@ use crate::{
 
 pub use checked::*;
 pub use finishes::slope_from_roughness;
+pub use maps::{Files, LONGEST_TABLE};
 pub use schema::schema;
 
 /// Longest joint file, bytes.
@@ -54,7 +61,8 @@ pub const MOST_PLACES: usize = 10_000;
 /// Every fault of one reading, with the texts they stand in.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Faults {
-    /// Name and text: the file first, its name left empty for the caller, then each override.
+    /// Name and text: the file first, its name left empty for the caller, then each override, then
+    /// each table that the file names, as it names it.
     pub sources: Vec<(String, String)>,
     /// Faults in file order, each with the index of its text.
     pub faults: Vec<(usize, Fault)>,
@@ -79,24 +87,40 @@ pub fn read(text: &str) -> Result<Joint, Vec<Fault>> {
 
 /// Reads a joint file with overrides such as `plate.upper.thickness="6 mm"`, which act before
 /// anything is checked. Faults in an override point to the override.
+///
+/// A table that the file names is not read: see [`read_with_files`].
 pub fn read_with(text: &str, sets: &[String]) -> Result<Joint, Faults> {
-    let (joint, faults) = reading(text, sets);
+    read_with_files(text, sets, &|_| Err("no files are read here".into()))
+}
+
+/// Reads a joint file with overrides, and the tables it names (`flatness_map`) by `files`: from
+/// the name as stated to the text, or to the reason why there is none. Faults in a table point
+/// into the table.
+pub fn read_with_files(text: &str, sets: &[String], files: &Files<'_>) -> Result<Joint, Faults> {
+    let start = text.len() + 1 + sets.iter().map(|set| set.len() + 1).sum::<usize>();
+    let mut tables = Tables::new(files, start);
+    let (joint, faults) = reading(text, sets, &mut tables);
     match joint {
         Some(joint) if faults.is_empty() => Ok(joint),
-        _ => Err(placed(text, sets, faults)),
+        _ => Err(placed(text, sets, (tables.read, faults))),
     }
 }
 
-/// Spans count through the file and then through the overrides, each after a line break; here
-/// they are given back to their own texts.
-fn placed(text: &str, sets: &[String], faults: Vec<Fault>) -> Faults {
+/// Spans count through the file, then through the overrides and the tables, each after a line
+/// break; here they are given back to their own texts.
+fn placed(
+    text: &str,
+    sets: &[String],
+    (tables, faults): (Vec<(String, String)>, Vec<Fault>),
+) -> Faults {
     let mut sources = vec![(String::new(), text.to_owned())];
-    let mut starts = vec![0];
-    let mut start = text.len() + 1;
-    for set in sets {
-        sources.push((format!("--set {set}"), set.clone()));
+    let sets = sets.iter().map(|set| (format!("--set {set}"), set.clone()));
+    sources.extend(sets.chain(tables));
+    let mut starts = Vec::with_capacity(sources.len());
+    let mut start = 0;
+    for (_, text) in &sources {
         starts.push(start);
-        start += set.len() + 1;
+        start += text.len() + 1;
     }
     let faults = faults.into_iter().map(|mut fault| {
         let source = starts.partition_point(|start| *start <= fault.span.start) - 1;
@@ -111,7 +135,7 @@ fn placed(text: &str, sets: &[String], faults: Vec<Fault>) -> Faults {
     }
 }
 
-fn reading(text: &str, sets: &[String]) -> (Option<Joint>, Vec<Fault>) {
+fn reading(text: &str, sets: &[String], tables: &mut Tables<'_>) -> (Option<Joint>, Vec<Fault>) {
     if text.len() > LONGEST_FILE {
         let told = fault(
             "file/too-large",
@@ -146,7 +170,7 @@ fn reading(text: &str, sets: &[String]) -> (Option<Joint>, Vec<Fault>) {
     }
     let readable = syntax::all_recovered(&errors);
     let joint = if overridden && readable {
-        assembled(&file, &mut collector)
+        assembled(&file, tables, &mut collector)
     } else {
         None
     };
@@ -182,9 +206,9 @@ fn newer_format(file: &Record) -> Option<Fault> {
 }
 
 /// The joint, in the order of the file's parts; none when a part is faulty.
-fn assembled(file: &Record, collector: &mut Collector) -> Option<Joint> {
+fn assembled(file: &Record, tables: &mut Tables<'_>, collector: &mut Collector) -> Option<Joint> {
     let own = materials::own(file, collector);
-    let plates = plates::read(file, &own, collector);
+    let plates = plates::read(file, &own, tables, collector);
     let cooled = plates
         .as_ref()
         .and_then(|[_, lower]| lower.record.record("cooled"));
@@ -224,3 +248,6 @@ fn assembled(file: &Record, collector: &mut Collector) -> Option<Joint> {
     cold::check(&joint, file, collector);
     Some(joint)
 }
+
+#[cfg(test)]
+mod fixture;

@@ -62,11 +62,13 @@ pub enum Quantity {
     HeatFlux,
     /// Area, m².
     Area,
+    /// Curvature, 1/m.
+    Curvature,
 }
 
 impl Quantity {
     /// Every quantity, in the order of the definition.
-    pub const ALL: [Self; 18] = [
+    pub const ALL: [Self; 19] = [
         Self::Length,
         Self::Force,
         Self::Torque,
@@ -85,6 +87,7 @@ impl Quantity {
         Self::Density,
         Self::HeatFlux,
         Self::Area,
+        Self::Curvature,
     ];
 
     /// Name in the trade, singular and without an article.
@@ -108,6 +111,7 @@ impl Quantity {
             Self::Density => "density",
             Self::HeatFlux => "heat flux",
             Self::Area => "area",
+            Self::Curvature => "curvature",
         }
     }
 
@@ -137,6 +141,7 @@ impl Quantity {
             Self::Density => "2700 kg/m³",
             Self::HeatFlux => "2 W/cm²",
             Self::Area => "64 cm²",
+            Self::Curvature => "0.02 1/m",
         }
     }
 
@@ -160,6 +165,7 @@ impl Quantity {
             Self::Density => "kg/m³",
             Self::HeatFlux => "W/m²",
             Self::Area => "m²",
+            Self::Curvature => "1/m",
         }
     }
 

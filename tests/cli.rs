@@ -1,5 +1,8 @@
 //! The command line: what it prints where, how it ends, what it leaves on disk.
 
+#[path = "cli/tables.rs"]
+mod tables;
+
 use snapbox::{
     cmd::{Command, OutputAssert, cargo_bin},
     str,

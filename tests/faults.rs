@@ -42,8 +42,15 @@ fn sets(text: &str) -> Vec<String> {
         .collect()
 }
 
+/// Tables stand beside the broken files.
+fn table(name: &str) -> Result<String, String> {
+    fs::read_to_string(folder("tests/faults").join(name))
+        .map_err(|_| "there is no such file".into())
+}
+
 fn faults(name: &str, text: &str) -> Faults {
-    joint::read_with(text, &sets(text)).expect_err(&format!("{name}.toml must be refused"))
+    joint::read_with_files(text, &sets(text), &table)
+        .expect_err(&format!("{name}.toml must be refused"))
 }
 
 #[test]

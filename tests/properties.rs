@@ -211,6 +211,9 @@ fn in_millimetres(joint: &Joint, mm: f64) -> Joint {
         match &mut plate.outline {
             Outline::Rectangle { size } => point(size),
             Outline::Disc { radius } => *radius *= mm,
+            Outline::Polygon { points } => {
+                *points = points.iter().map(|place| place.map(|x| x * mm)).collect();
+            }
         }
         let roughness = &mut plate.finish.roughness;
         for value in [

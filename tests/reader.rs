@@ -4,6 +4,8 @@
 mod advice;
 #[path = "reader/fillers.rs"]
 mod fillers;
+#[path = "reader/plates.rs"]
+mod plates;
 
 use std::{fmt::Write, fs, path::PathBuf, time::Instant};
 

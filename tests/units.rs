@@ -218,6 +218,12 @@ fn thermal_quantities_are_read() {
         ("23.6e-6 1/K", Quantity::Expansion, 23.6e-6),
         ("23.6e-6 /K", Quantity::Expansion, 23.6e-6),
         ("23.6e-6/K", Quantity::Expansion, 23.6e-6),
+        ("0.02 1/m", Quantity::Curvature, 0.02),
+        ("0.02 /m", Quantity::Curvature, 0.02),
+        ("2e-5 1/mm", Quantity::Curvature, 0.02),
+        ("-0.02 m^-1", Quantity::Curvature, -0.02),
+        ("20 kW/m²", Quantity::HeatFlux, 2e4),
+        ("2 W/cm²", Quantity::HeatFlux, 2e4),
         ("23.6e-6 K⁻¹", Quantity::Expansion, 23.6e-6),
         ("2 W/cm²", Quantity::HeatFlux, 2e4),
     ] {

@@ -195,7 +195,7 @@ fn ring_sum_agrees_with_adaptive_quadrature() {
         let cone = case.closed_form();
         let disc = Outline::Disc { radius: i.Ro };
         let plan = Plan {
-            outlines: [(disc, [0.0; 2]); 2],
+            outlines: [(disc.clone(), [0.0; 2]), (disc, [0.0; 2])],
             thickness: [i.t1, i.t2],
             sites: vec![Site {
                 at: [0.0; 2],

@@ -5,7 +5,9 @@ pub use crate::estimate::{Choice, Fineness, Watch};
 use crate::{
     cli::console::Trouble,
     diagnostic,
-    estimate::{self, Chain, Estimate, Failure, FieldMap, Options, RingRow, TorqueSweep},
+    estimate::{
+        self, BEYOND_CONE, Chain, Estimate, Failure, FieldMap, Options, RingRow, TorqueSweep,
+    },
     figures::{self, Drawing, Format},
     joint::Joint,
     uncertainty::{self, SweepOptions},
@@ -87,6 +89,12 @@ impl From<Failure> for Trouble {
             | Failure::SweepRange { .. } => Self::Usage {
                 message: failure.to_string(),
                 help: None,
+            },
+            Failure::BeyondCone(_) => Self::Usage {
+                message: failure.to_string(),
+                help: Some(format!(
+                    "estimate it with `--field elastic`; `ringsum explain {BEYOND_CONE}` tells more"
+                )),
             },
             _ => Self::Failure(failure.to_string()),
         }

@@ -104,12 +104,19 @@ pub fn read(
         console.message("reading a joint from the keyboard; end it with Ctrl-D\n");
     }
     let source = input::read(path).map_err(|fault| Refused::unread(path, fault))?;
-    match joint::read_with(&source.text, sets) {
+    let folder = input::folder(path);
+    match joint::read_with_files(&source.text, sets, &|name| input::table(&folder, name)) {
         Ok(joint) => Ok((source, joint)),
-        Err(faults) => Err(Refused {
-            name: source.name,
-            faults,
-        }),
+        Err(mut faults) => {
+            // The file names its tables from its own folder; a message names them from here.
+            for (name, _) in faults.sources.iter_mut().skip(1 + sets.len()) {
+                *name = input::name(&folder.join(&*name));
+            }
+            Err(Refused {
+                name: source.name,
+                faults,
+            })
+        }
     }
 }
 

@@ -56,15 +56,24 @@ pub fn of_joint(
 fn outline(plate: &Plate) -> PlanOutline {
     PlanOutline {
         name: plate.name.clone(),
-        shape: match plate.outline {
+        shape: match &plate.outline {
             Outline::Rectangle { size } => PlanShape::Rectangle {
                 corner: plate.origin,
-                size,
+                size: *size,
             },
             Outline::Disc { radius } => PlanShape::Disc {
                 centre: plate.origin,
-                radius,
+                radius: *radius,
             },
+            Outline::Polygon { points } => {
+                let [x, y] = plate.origin;
+                PlanShape::Polygon(
+                    points
+                        .iter()
+                        .map(|point| [x + point[0], y + point[1]])
+                        .collect(),
+                )
+            }
         },
     }
 }

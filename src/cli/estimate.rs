@@ -157,6 +157,18 @@ impl Estimate {
                 }
                 Err(Trouble::Failure(format!("{}: {message}", source.name)))
             }
+            Err(Trouble::Usage { message, help }) => {
+                if self.json {
+                    let object = serde_json::json!({
+                        "file": source.name, "ok": false, "failure": message,
+                    });
+                    console.json(&object, layout)?;
+                }
+                Err(Trouble::Usage {
+                    message: format!("{}: {message}", source.name),
+                    help,
+                })
+            }
             Err(trouble) => Err(trouble),
         }
     }

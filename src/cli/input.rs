@@ -3,7 +3,7 @@
 use crate::{
     cli::{chain, console::Trouble},
     diagnostic::Fault,
-    joint::LONGEST_FILE,
+    joint::{LONGEST_FILE, LONGEST_TABLE},
     report::number::plain,
 };
 use std::{
@@ -89,6 +89,44 @@ pub fn read(path: &Path) -> Result<Source, Fault> {
         ));
     }
     Ok(Source { name, text })
+}
+
+/// The folder beside a joint file; for standard input the current one.
+pub fn folder(path: &Path) -> PathBuf {
+    match path.parent() {
+        Some(parent) if !is_stdin(path) => parent.to_owned(),
+        _ => PathBuf::new(),
+    }
+}
+
+/// The text of a table that a joint file names, from a folder, or why there is none.
+pub fn table(folder: &Path, name: &str) -> Result<String, String> {
+    let path = folder.join(name);
+    if path.is_dir() {
+        return Err("it is a folder".to_owned());
+    }
+    let file = fs::File::open(&path).map_err(|found| match found.kind() {
+        io::ErrorKind::NotFound => {
+            format!("there is no file `{}`", plain(&path.display().to_string()))
+        }
+        _ => found.to_string(),
+    })?;
+    let mut bytes = Vec::new();
+    file.take(LONGEST_TABLE as u64 + 1)
+        .read_to_end(&mut bytes)
+        .map_err(|found| found.to_string())?;
+    if bytes.len() > LONGEST_TABLE {
+        return Err(format!(
+            "it is larger than {} MB",
+            LONGEST_TABLE / 1_000_000
+        ));
+    }
+    String::from_utf8(bytes).map_err(|found| {
+        let good = found.utf8_error().valid_up_to();
+        let before = String::from_utf8_lossy(&found.as_bytes()[..good]);
+        let line = before.matches('\n').count() + 1;
+        format!("it is not UTF-8 text (line {line}); `um` needs no special sign")
+    })
 }
 
 fn is_stdin(path: &Path) -> bool {

@@ -2,7 +2,7 @@
 
 use crate::{
     estimate::{Chain, Failure, FieldMap, Realisation, RingRow},
-    joint::{Joint, Outline, Plate},
+    joint::{Joint, Plate},
 };
 
 /// Pressure, gap and local conductance over the window of both plates, `columns` points wide.
@@ -55,7 +55,7 @@ fn window(joint: &Joint) -> [f64; 4] {
     joint
         .plates
         .iter()
-        .map(extent)
+        .map(Plate::bounds)
         .reduce(|one, other| {
             [
                 one[0].min(other[0]),
@@ -65,12 +65,4 @@ fn window(joint: &Joint) -> [f64; 4] {
             ]
         })
         .expect("a joint has two plates")
-}
-
-fn extent(plate: &Plate) -> [f64; 4] {
-    let [x, y] = plate.origin;
-    match plate.outline {
-        Outline::Rectangle { size } => [x, y, x + size[0], y + size[1]],
-        Outline::Disc { radius } => [x - radius, y - radius, x + radius, y + radius],
-    }
 }

@@ -1,14 +1,17 @@
 //! The checked joint: SI, nothing missing, every default already recorded as an assumption.
 
-use crate::{
-    catalog::{self, Material},
-    diagnostic::Assumption,
-};
+mod flatness_map;
+mod plates;
+
+use crate::{catalog, diagnostic::Assumption};
+
+pub use flatness_map::FlatnessMap;
+pub use plates::{Bimetal, Coating, Feet, Finish, Outline, Patch, Plate, Rib, Sag};
 
 /// Everything the chain needs to know of one joint. Lengths in m, every other value in SI.
 ///
-/// Plan coordinates are those of the first plate: from its lower left corner, or from its centre
-/// when it is round. The first plate is the warm side and lies on top.
+/// Plan coordinates are those of the first plate: from its lower left corner, from its centre when
+/// it is round, or as the points of its outline. The first plate is the warm side and lies on top.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Joint {
     /// Title, as the file gives it.
@@ -154,64 +157,6 @@ pub enum Limit {
     Most,
     /// At least the limit.
     Least,
-}
-
-/// One plate.
-#[derive(Clone, Debug, PartialEq)]
-pub struct Plate {
-    /// Name by which other tables and results call it.
-    pub name: String,
-    /// Material, from the catalogue or the file.
-    pub material: Material,
-    /// Thickness, m.
-    pub thickness: f64,
-    /// Outline in plan, in the plate's own coordinates.
-    pub outline: Outline,
-    /// Where the plate's own origin lies in joint coordinates, m.
-    pub origin: [f64; 2],
-    /// The faying face.
-    pub finish: Finish,
-    /// Stated total out-of-flatness of the faying face, m.
-    pub flatness: Option<f64>,
-    /// Height of a known bow, m: positive concave (open at the centre), negative convex.
-    pub bow: Option<f64>,
-}
-
-/// Shape in plan.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub enum Outline {
-    /// From the origin (lower left corner) to `size`, m.
-    Rectangle {
-        /// Width and height, m.
-        size: [f64; 2],
-    },
-    /// About the origin.
-    Disc {
-        /// Radius, m.
-        radius: f64,
-    },
-}
-
-/// The faying face of a plate.
-#[derive(Clone, Debug, PartialEq)]
-pub struct Finish {
-    /// Root-mean-square roughness Rq, m.
-    pub roughness: Bounds,
-    /// Root-mean-square slope of the asperities, 1.
-    pub slope: f64,
-    /// Factor by which the slope may be off either way, one standard deviation.
-    pub slope_factor: f64,
-    /// What lies on the face.
-    pub coating: Option<Coating>,
-}
-
-/// A plating or film on a face.
-#[derive(Clone, Debug, PartialEq)]
-pub struct Coating {
-    /// The catalogue record.
-    pub plating: catalog::Plating,
-    /// Thickness, m.
-    pub thickness: f64,
 }
 
 /// Where heat enters the outer face of the first plate.
@@ -368,6 +313,39 @@ pub struct Contact {
     pub shape: ConeShape,
     /// Hemispherical emissivity of the two faces.
     pub emissivity: [f64; 2],
+    /// How the heads press.
+    pub head_model: HeadModel,
+    /// Whether the faces slide on each other.
+    pub faces: FaceFriction,
+    /// What yields between the faces.
+    pub compliance: Compliance,
+}
+
+/// How heads and nuts press on their seats.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum HeadModel {
+    /// One pressure over the seat.
+    Uniform,
+    /// The seat stays plane and moves as a whole.
+    Rigid,
+}
+
+/// Whether the faying faces slide on each other.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum FaceFriction {
+    /// They slide freely.
+    Frictionless,
+    /// They stick where they touch.
+    Stuck,
+}
+
+/// What yields between the faying faces, besides the plates.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Compliance {
+    /// Nothing: contact is hard.
+    Hard,
+    /// The asperities.
+    Asperities,
 }
 
 /// Law of the solid spots.

@@ -3,7 +3,7 @@
 use crate::{
     catalog::MaterialKind,
     joint::{
-        ConeRule, ConeShape, Contact, Law, Losses,
+        Compliance, ConeRule, ConeShape, Contact, FaceFriction, HeadModel, Law, Losses,
         collector::{Collector, Wording, fault},
         plates::PlateDraft,
         record::{PerPlate, Record},
@@ -43,14 +43,36 @@ pub(super) fn read(
         _ => Some(ConeRule::Fitted),
     };
     let shape = shape(record, cone, collector);
-    cone_limits(record, collector);
+    let head_model = word(record, "head_model", [HeadModel::Uniform, HeadModel::Rigid]);
+    let faces = word(
+        record,
+        "faces",
+        [FaceFriction::Frictionless, FaceFriction::Stuck],
+    );
+    let compliance = word(
+        record,
+        "compliance",
+        [Compliance::Hard, Compliance::Asperities],
+    );
     let emissivity = emissivity(record, plates, collector);
     Some(Contact {
         law: law?,
         cone: cone?,
         shape: shape?,
         emissivity: emissivity?,
+        head_model: head_model?,
+        faces: faces?,
+        compliance: compliance?,
     })
+}
+
+/// Default or second choice of a field with two words; none when it is faulty.
+fn word<T>(record: &Record, key: &str, [default, second]: [T; 2]) -> Option<T> {
+    match record.text(key) {
+        None if record.has(key) => None,
+        Some("rigid" | "stuck" | "asperities") => Some(second),
+        _ => Some(default),
+    }
 }
 
 fn shape(record: &Record, cone: Option<ConeRule>, collector: &mut Collector) -> Option<ConeShape> {
@@ -73,31 +95,6 @@ fn shape(record: &Record, cone: Option<ConeRule>, collector: &mut Collector) -> 
         Some("polynomial") => Some(ConeShape::Polynomial),
         None if !fitted => Some(ConeShape::Linear),
         _ => Some(ConeShape::Fitted),
-    }
-}
-
-/// The closed-form cone knows only the defaults of these.
-fn cone_limits(record: &Record, collector: &mut Collector) {
-    for (key, only) in [
-        ("head_model", "uniform"),
-        ("faces", "frictionless"),
-        ("compliance", "hard"),
-    ] {
-        if let Some(found) = record.text(key)
-            && found != only
-        {
-            collector.report(
-                fault(
-                    "contact/beyond-cone",
-                    &record.span(key),
-                    format!("the cone does not know `{key} = \"{found}\"`"),
-                )
-                .expecting(format!("expected `{only}`"))
-                .help(format!(
-                    "the closed-form cone stands for {key} `{only}` alone; leave the key out"
-                )),
-            );
-        }
     }
 }
 

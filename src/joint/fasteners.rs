@@ -75,7 +75,7 @@ fn group(
     let parts = Parts::read(record, thread, collector);
     let head_plate = head_plate(record, plates, collector);
     let tightening = tightening::read(record, collector);
-    let places = patterns::read(record, plates[0].outline, collector);
+    let places = patterns::read(record, plates[0].outline.as_ref(), collector);
     let seated = thread.zip(head_plate).and_then(|(thread, head_plate)| {
         let engagement = engagement(record, thread, &plates[1 - head_plate], collector)?;
         let bolt = Bolt {

@@ -4,7 +4,7 @@ use crate::{
     diagnostic::Fault,
     joint::{
         collector::{Collector, Wording, fault},
-        geometry::depth_at,
+        patches::Passing,
         plates::PlateDraft,
         tree::Span,
     },
@@ -50,7 +50,8 @@ pub(super) fn fit(site: &Site, plates: &[PlateDraft; 2], collector: &mut Collect
 
 fn beyond(land: Land, index: usize, point: [f64; 2], plate: &PlateDraft) -> Option<Fault> {
     let (outline, origin) = plate.placed()?;
-    let depth = depth_at(outline, origin, point);
+    let own = [point[0] - origin[0], point[1] - origin[1]];
+    let depth = outline.depth(own);
     if depth + SLACK < land.holes[index] {
         return Some(
             fault(
@@ -64,7 +65,8 @@ fn beyond(land: Land, index: usize, point: [f64; 2], plate: &PlateDraft) -> Opti
             )
             .expecting(format!("expected on plate `{}`", plate.name))
             .help(
-                "`at` is measured from the lower left corner of the first plate (round: its centre)",
+                "`at` is measured from the lower left corner of the first plate (round: its \
+                 centre; outline: as its points)",
             ),
         );
     }
@@ -74,7 +76,18 @@ fn beyond(land: Land, index: usize, point: [f64; 2], plate: &PlateDraft) -> Opti
     } else {
         "nut"
     };
-    (depth + SLACK < seat).then(|| {
+    if depth + SLACK >= seat {
+        let parts = plate.parts.as_ref()?;
+        return parts.clash(Passing {
+            axis: own,
+            hole: land.holes[index],
+            part,
+            seat,
+            place: &shown(point),
+            plate: &plate.name,
+        });
+    }
+    Some(
         fault(
             "plate/head-beyond-edge",
             &(0..0),
@@ -87,8 +100,8 @@ fn beyond(land: Land, index: usize, point: [f64; 2], plate: &PlateDraft) -> Opti
         .expecting(format!(
             "expected at least {} from the edge",
             units::show(seat, Quantity::Length)
-        ))
-    })
+        )),
+    )
 }
 
 /// No two holes, heads or nuts may share the same land.

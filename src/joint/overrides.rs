@@ -49,11 +49,13 @@ const CODE: &str = "set/bad-override";
 const EXAMPLE: &str = "for example `--set plate.upper.thickness=\"6 mm\"`";
 
 /// Keys of one table of which only one group may stand.
-const EXCLUSIVE: [&[&[&str]]; 9] = [
+const EXCLUSIVE: [&[&[&str]]; 11] = [
     &[&["torque"], &["preload"]],
     &[&["method"], &["scatter"]],
     &[&["at"], &["pattern"]],
-    &[&["size"], &["diameter"]],
+    &[&["size"], &["diameter"], &["outline"]],
+    &[&["flux"], &["curvature"], &["bimetal"]],
+    &[&["bow"], &["flatness_map"]],
     &[&["film"], &["face"], &["edge"]],
     &[&["class"], &["thread", "head"], &["nut_factor"]],
     &[&["rise"], &["resistance"], &["conductance"]],

@@ -17,7 +17,7 @@ pub(super) type Place = (Point, Span);
 /// Reads the places of a fastener group on a first plate of known outline.
 pub(super) fn read(
     record: &Record,
-    outline: Option<Outline>,
+    outline: Option<&Outline>,
     collector: &mut Collector,
 ) -> Option<Vec<Place>> {
     let places = match (record.has("at"), record.has("pattern")) {
@@ -64,7 +64,7 @@ fn no_place(record: &Record, span: &Span) -> crate::diagnostic::Fault {
 
 fn by_rule(
     record: &Record,
-    outline: Option<Outline>,
+    outline: Option<&Outline>,
     collector: &mut Collector,
 ) -> Option<Vec<Place>> {
     let kind = record.text("kind")?;
@@ -121,7 +121,7 @@ fn by_rule(
 fn grid(
     record: &Record,
     counts: [usize; 2],
-    outline: Option<Outline>,
+    outline: Option<&Outline>,
     collector: &mut Collector,
 ) -> Option<Vec<Point>> {
     let (first, pitch) = if record.has("first") || record.has("pitch") {
@@ -153,7 +153,7 @@ fn grid(
 fn within_margin(
     record: &Record,
     counts: [usize; 2],
-    outline: Option<Outline>,
+    outline: Option<&Outline>,
     collector: &mut Collector,
 ) -> Option<(Point, Point)> {
     if !record.has("margin") {
@@ -177,7 +177,7 @@ fn within_margin(
 fn circle(
     record: &Record,
     count: usize,
-    outline: Option<Outline>,
+    outline: Option<&Outline>,
     collector: &mut Collector,
 ) -> Option<Vec<Point>> {
     let radius = match (record.has("diameter"), record.has("margin"), outline) {
@@ -186,7 +186,7 @@ fn circle(
             return None;
         }
         (true, false, _) => record.number("diameter")? / 2.0,
-        (false, true, Some(Outline::Disc { radius })) => radius - record.number("margin")?,
+        (false, true, Some(Outline::Disc { radius })) => *radius - record.number("margin")?,
         (false, true, None) => return None,
         (false, _, _) => {
             collector.report(missing(record, "diameter", "diameter = \"50 mm\""));

@@ -1,14 +1,19 @@
 //! The two plates, where they lie on each other, where heat enters and leaves.
 
+use std::sync::Arc;
+
 use crate::{
     catalog::Material,
     joint::{
-        Finish, Outline, Plate, Sink, Source, Zone,
+        Finish, FlatnessMap, Outline, Patch, Plate, Sag, Sink, Source, Zone,
         collector::{Collector, Wording, fault},
         finishes,
-        geometry::{Placed, holds_zone, overlap},
+        geometry::{holds_zone, overlap, swallowed},
+        maps::Tables,
         materials::{self, Own, duplicate},
+        patches::{self, Parts},
         record::Record,
+        sag,
         sections::PLATE_NAMES,
         walk::missing,
     },
@@ -36,16 +41,27 @@ pub(super) struct PlateDraft {
     pub finish: Option<Finish>,
     /// Known bow, m.
     pub bow: Option<f64>,
+    /// Measured map of the faying face.
+    pub flatness_map: Option<Arc<FlatnessMap>>,
+    /// Thermal sag.
+    pub sag: Option<Sag>,
+    /// Cut-outs, feet and ribs.
+    pub parts: Option<Parts>,
 }
 
 impl PlateDraft {
     /// Outline and origin.
-    pub(super) fn placed(&self) -> Option<Placed> {
-        Some((self.outline?, self.origin?))
+    pub(super) fn placed(&self) -> Option<(&Outline, [f64; 2])> {
+        Some((self.outline.as_ref()?, self.origin?))
     }
 
     /// The finished plate.
     pub(super) fn finished(self) -> Option<Plate> {
+        let lost = |key: &str, is_none: bool| is_none && self.record.has(key);
+        if lost("flatness_map", self.flatness_map.is_none()) || lost("sag", self.sag.is_none()) {
+            return None;
+        }
+        let parts = self.parts?;
         Some(Plate {
             flatness: self
                 .record
@@ -58,6 +74,15 @@ impl PlateDraft {
             origin: self.origin?,
             finish: self.finish?,
             bow: self.bow,
+            flatness_map: self.flatness_map,
+            sag: self.sag,
+            cutouts: parts
+                .cutouts
+                .into_iter()
+                .map(|(cutout, _)| cutout)
+                .collect(),
+            feet: parts.feet,
+            ribs: parts.ribs.into_iter().map(|(rib, _)| rib).collect(),
         })
     }
 }
@@ -66,6 +91,7 @@ impl PlateDraft {
 pub(super) fn read(
     file: &Record,
     own: &Own,
+    tables: &mut Tables<'_>,
     collector: &mut Collector,
 ) -> Option<[PlateDraft; COUNT]> {
     let records = file.records("plate");
@@ -100,6 +126,19 @@ pub(super) fn read(
     };
     let mut upper = draft(first, PLATE_NAMES[0], own, collector);
     let mut lower = draft(second, PLATE_NAMES[1], own, collector);
+    for draft in [&mut upper, &mut lower] {
+        draft.sag = sag::read(file, &draft.record, own, collector);
+        draft.flatness_map = tables.flatness(&draft.record, draft.outline.as_ref(), collector);
+    }
+    if first.has("feet") && second.has("feet") {
+        collector.report(
+            fault("plate/feet", &second.span("feet"), "both plates have feet")
+                .expecting("expected feet on one of the two")
+                .help(
+                    "feet stand on the plain face of the other plate: state them on one side only",
+                ),
+        );
+    }
     if upper.name == lower.name {
         collector.report(duplicate("plate", &lower.name, &second.span("name")));
     }
@@ -117,7 +156,7 @@ pub(super) fn read(
                 "the plates do not lie on each other",
             )
             .expecting("expected a place on this plate")
-            .help("`offset` is where the corner (round: the centre) of the first plate lies on the second"),
+            .help("`offset` is where the corner (round: the centre; outline: the origin of its points) of the first plate lies on the second"),
         );
         // Without a place for it, no hole is told to lie beside this plate.
         lower.origin = None;
@@ -137,6 +176,7 @@ fn draft(record: &Record, default_name: &str, own: &Own, collector: &mut Collect
     if let Some(finish) = record.record("finish")
         && !finish.has("flatness")
         && !record.has("bow")
+        && !record.has("flatness_map")
     {
         collector.assume(
             finish.at("flatness"),
@@ -144,34 +184,50 @@ fn draft(record: &Record, default_name: &str, own: &Own, collector: &mut Collect
             "not stated; out-of-flatness opens the joint between the bolts",
         );
     }
+    if record.has("bow") && record.has("flatness_map") {
+        collector.report(two_ways(record, ["bow", "flatness_map"]));
+    }
+    let outline = outline(record, collector);
     PlateDraft {
         name: record.text("name").unwrap_or(default_name).to_owned(),
         material: materials::of_plate(record, own, collector),
         thickness: record.number("thickness"),
-        outline: outline(record, collector),
+        parts: patches::read(record, outline.as_ref(), collector),
+        outline,
         origin: None,
         finish: finishes::read(record, collector),
         bow,
+        flatness_map: None,
+        sag: None,
         record: record.clone(),
     }
 }
 
 fn outline(record: &Record, collector: &mut Collector) -> Option<Outline> {
-    match (record.has("size"), record.has("diameter")) {
-        (true, false) => Some(Outline::Rectangle {
+    let stated: Vec<&str> = ["size", "diameter", "outline"]
+        .into_iter()
+        .filter(|key| record.has(key))
+        .collect();
+    match stated.as_slice() {
+        ["size"] => Some(Outline::Rectangle {
             size: record.point("size")?,
         }),
-        (false, true) => Some(Outline::Disc {
+        ["diameter"] => Some(Outline::Disc {
             radius: record.number("diameter")? / 2.0,
         }),
-        (true, true) => {
-            collector.report(two_ways(record, ["size", "diameter"]));
+        ["outline"] => Some(Outline::Polygon {
+            points: patches::outline(record, collector)?,
+        }),
+        [first, second, ..] => {
+            collector.report(two_ways(record, [first, second]));
             None
         }
-        (false, false) => {
+        _ => {
             collector.report(
-                missing(record, "size", "size = [\"80 mm\", \"80 mm\"]")
-                    .help("for example `size = [\"80 mm\", \"80 mm\"]`, or `diameter = \"60 mm\"`"),
+                missing(record, "size", "size = [\"80 mm\", \"80 mm\"]").help(
+                    "for example `size = [\"80 mm\", \"80 mm\"]`, or `diameter = \"60 mm\"`, or \
+                     an `outline` by points",
+                ),
             );
             None
         }
@@ -213,7 +269,7 @@ fn origin_of_second(
     if lower.record.has("offset") {
         return None;
     }
-    let (above, below) = (upper.outline?, lower.outline?);
+    let (above, below) = (upper.outline.as_ref()?, lower.outline.as_ref()?);
     if above != below {
         collector.assume(
             lower.record.at("offset"),
@@ -243,16 +299,23 @@ pub(super) fn source(upper: &PlateDraft, collector: &mut Collector) -> Option<So
         }
     };
     let zone = zone(record, upper, collector)?;
-    let outline = upper.outline?;
-    collector.require(holds_zone(outline, zone), || {
+    let outline = upper.outline.as_ref()?;
+    collector.require(holds_zone(outline, zone) && !falls_out(upper, zone), || {
         fault(
             "zone/outside",
             &record.place,
-            format!("the heated zone reaches beyond plate `{}`", upper.name),
+            if holds_zone(outline, zone) {
+                format!(
+                    "the heated zone lies in a cut-out of plate `{}`",
+                    upper.name
+                )
+            } else {
+                format!("the heated zone reaches beyond plate `{}`", upper.name)
+            },
         )
         .expecting("expected inside the plate")
         .help(
-            "`centre` is measured from the lower left corner of the plate (round: from its centre)",
+            "`centre` is measured from the lower left corner of the plate (round: from its centre; outline: as its points)",
         )
     });
     Some(Source {
@@ -261,11 +324,23 @@ pub(super) fn source(upper: &PlateDraft, collector: &mut Collector) -> Option<So
     })
 }
 
+/// Whether a zone lies wholly in the cut-outs of its plate.
+fn falls_out(upper: &PlateDraft, zone: Zone) -> bool {
+    let shape = match zone {
+        Zone::Face => return false,
+        Zone::Rectangle { centre, size } => Patch::Rectangle { centre, size },
+        Zone::Disc { centre, radius } => Patch::Disc { centre, radius },
+    };
+    let cutouts = upper.parts.iter().flat_map(|parts| &parts.cutouts);
+    let cutouts: Vec<Patch> = cutouts.map(|(cutout, _)| cutout.clone()).collect();
+    !cutouts.is_empty() && swallowed(&shape, &cutouts)
+}
+
 fn zone(record: &Record, upper: &PlateDraft, collector: &mut Collector) -> Option<Zone> {
     let centre = || match record.point("centre") {
         Some(centre) => Some(centre),
         None if record.has("centre") => None,
-        None => Some(upper.outline?.centre()),
+        None => Some(upper.outline.as_ref()?.centre()),
     };
     match (record.has("size"), record.has("diameter")) {
         (true, true) => {
@@ -310,7 +385,7 @@ pub(super) fn sink(lower: &PlateDraft, collector: &mut Collector) -> Option<Sink
         ["film"] => record.number("film").map(Sink::Film),
         ["temperature" | "face"] | ["temperature", "face"] => Some(Sink::IsothermalBack),
         ["edge"] | ["temperature", "edge"] => {
-            let round = matches!(lower.outline?, Outline::Disc { .. });
+            let round = matches!(lower.outline.as_ref()?, Outline::Disc { .. });
             collector.require(round, || {
                 fault(
                     "plate/not-round",

@@ -12,7 +12,8 @@ use crate::{
 pub use fasteners::{ENGAGEMENT, FASTENER, FRICTION, PATTERN, TORQUE};
 pub use filler::{FILLER, MEASURED, MEASURED_LAW};
 pub use plates::{
-    BOW, COOLED, FINISH, HEATED, MATERIAL, MATERIAL_INLINE, MICROHARDNESS, PLATE, PLATING,
+    BIMETAL, BOW, COOLED, CUTOUT, FEET, FINISH, FOOT, HEATED, MATERIAL, MATERIAL_INLINE,
+    MICROHARDNESS, PLATE, PLATING, RIB, SAG,
 };
 
 /// The newest format this version reads.
@@ -275,7 +276,7 @@ pub static CONTACT: Section = Section {
         .default("frictionless"),
         field(
             "compliance",
-            Kind::Choice(&["hard", "asperities", "filler"]),
+            Kind::Choice(&["hard", "asperities"]),
             "what yields between the faces",
             "\"hard\"",
         )

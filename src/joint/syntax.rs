@@ -33,7 +33,10 @@ pub(super) fn without_echoes(faults: Vec<Fault>, syntax: &[Fault], text: &str) -
         .collect();
     faults
         .into_iter()
-        .filter(|fault| !lines.contains(&line_of(text, &fault.span)))
+        .filter(|fault| {
+            // Overrides and tables stand behind the text.
+            fault.span.start > text.len() || !lines.contains(&line_of(text, &fault.span))
+        })
         .collect()
 }
 

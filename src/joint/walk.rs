@@ -257,12 +257,17 @@ pub(super) fn missing(record: &Record, key: &str, line: &str) -> Fault {
 
 /// More of something than this version reads.
 pub(super) fn too_many(what: &str, span: &Span, count: usize) -> Fault {
+    more_than(MOST_PLACES, what, span, count)
+}
+
+/// More entries than a limit of their own.
+pub(super) fn more_than(most: usize, what: &str, span: &Span, count: usize) -> Fault {
     fault(
         "file/too-many",
         span,
         format!("`{what}` has {count} entries"),
     )
-    .expecting(format!("at most {MOST_PLACES}"))
+    .expecting(format!("at most {most}"))
 }
 
 fn wrong_type(node: &Node, what: &str, expected: &str) -> Fault {

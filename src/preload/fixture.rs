@@ -5,8 +5,9 @@ use std::f64::consts::PI;
 use crate::{
     catalog::{Datum, Grade, Material, MaterialKind, Status, Thread},
     joint::{
-        Bounds, ConeRule, ConeShape, Contact, Engagement, Fastener, Finish, Friction, Joint, Law,
-        Medium, Outline, Plate, Seat, Service, Sink, Source, Tightening, TorqueTightening, Zone,
+        Bounds, Compliance, ConeRule, ConeShape, Contact, Engagement, FaceFriction, Fastener,
+        Finish, Friction, HeadModel, Joint, Law, Medium, Outline, Plate, Seat, Service, Sink,
+        Source, Tightening, TorqueTightening, Zone,
     },
 };
 
@@ -137,6 +138,11 @@ fn plate(name: &str, thickness: f64) -> Plate {
         },
         flatness: None,
         bow: None,
+        flatness_map: None,
+        sag: None,
+        cutouts: Vec::new(),
+        feet: None,
+        ribs: Vec::new(),
     }
 }
 
@@ -163,6 +169,9 @@ pub fn joint() -> Joint {
             cone: ConeRule::Fitted,
             shape: ConeShape::Fitted,
             emissivity: [0.1; 2],
+            head_model: HeadModel::Uniform,
+            faces: FaceFriction::Frictionless,
+            compliance: Compliance::Hard,
         },
         filler: None,
         measured: None,

@@ -1,7 +1,7 @@
 //! The clamped stack of a fastener in its joint: grip, compliance, guide settling.
 
 use crate::{
-    joint::{Engagement, Fastener, Joint, Outline, Plate},
+    joint::{Engagement, Fastener, Joint, Plate},
     preload::{
         losses::{Compliance, Contacts, Part, Working, guide_values, peak_to_valley},
         resilience::{
@@ -202,18 +202,14 @@ fn land_diameter(joint: &Joint, fastener: &Fastener) -> f64 {
 
 /// Distance of a place from the nearest edge of a plate, m; negative outside.
 fn edge_distance(plate: &Plate, place: [f64; 2]) -> f64 {
-    let [x, y] = [place[0] - plate.origin[0], place[1] - plate.origin[1]];
-    match plate.outline {
-        Outline::Rectangle { size } => x.min(size[0] - x).min(y).min(size[1] - y),
-        Outline::Disc { radius } => radius - x.hypot(y),
-    }
+    plate.depth(place)
 }
 
 #[cfg(test)]
 mod tests {
     use super::*;
     use crate::{
-        joint::Seat,
+        joint::{Outline, Seat},
         preload::fixture::{joint, metric},
     };
 

@@ -118,6 +118,8 @@ fn outline_sides(outline: &Outline, origin: [f64; 2], axis: [f64; 2]) -> Vec<Sid
             centre: corner,
             radius,
         }],
+        // `cells` refuses polygons before any side is asked for.
+        Outline::Polygon { .. } => Vec::new(),
     }
 }
 
@@ -221,6 +223,10 @@ impl Plan {
 ///
 /// Checked: `cells_cover_the_plates`, `pressure_carries_the_force_whatever_the_edges`.
 pub fn cells(plan: &Plan) -> Result<Cells, Failure> {
+    let polygon = |(outline, _): &(Outline, _)| matches!(outline, Outline::Polygon { .. });
+    if let Some(plate) = plan.outlines.iter().position(polygon) {
+        return Err(Failure::Polygon { plate });
+    }
     let mut found = Cells {
         plan: plan.clone(),
         fine: Vec::with_capacity(plan.sites.len()),

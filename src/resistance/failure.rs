@@ -25,6 +25,12 @@ pub enum Failure {
         /// The network that found none.
         network: &'static str,
     },
+    /// The closed forms know rectangles and discs.
+    #[error("plate {} has an outline by points, which closed forms do not know", plate + 1)]
+    Polygon {
+        /// Index of the plate.
+        plate: usize,
+    },
     /// A reading is not a number, or infinite where a path leads through.
     #[error("{network} gave {reading} = {value}")]
     NotFinite {

@@ -1,11 +1,8 @@
 //! The pressure field on the faying faces: points for maps, rings for tables, areas and radii.
 
-use crate::{
-    joint::Outline,
-    resistance::{
-        cells::{Cell, Cells},
-        path::Load,
-    },
+use crate::resistance::{
+    cells::{Cell, Cells},
+    path::Load,
 };
 
 /// One ring around one bolt.
@@ -150,13 +147,7 @@ impl Cells {
 
     fn on_the_faces(&self, point: [f64; 2]) -> bool {
         self.plan.outlines.iter().all(|(outline, origin)| {
-            let [x, y] = [point[0] - origin[0], point[1] - origin[1]];
-            match *outline {
-                Outline::Rectangle { size } => {
-                    (0.0..=size[0]).contains(&x) && (0.0..=size[1]).contains(&y)
-                }
-                Outline::Disc { radius } => x.hypot(y) <= radius,
-            }
+            outline.depth([point[0] - origin[0], point[1] - origin[1]]) >= 0.0
         })
     }
 }

@@ -50,7 +50,7 @@ pub(super) fn load<'a, H>(conductance: H, forces: &'a [f64], shanks: &'a [f64]) 
 pub(super) fn round(rings: usize) -> Plan {
     let disc = Outline::Disc { radius: 0.03 };
     Plan {
-        outlines: [(disc, [0.0; 2]); 2],
+        outlines: [(disc.clone(), [0.0; 2]), (disc, [0.0; 2])],
         thickness: [5e-3; 2],
         sites: vec![site([0.0; 2], &pair([3.125e-3, 5e-3], 0.03, [5e-3; 2]))],
         source: WHOLE_FACE,
@@ -62,7 +62,7 @@ pub(super) fn round(rings: usize) -> Plan {
 fn heated_in_the_middle(size: [f64; 2], thickness: [f64; 2], sites: Vec<Site>) -> Plan {
     let outline = Outline::Rectangle { size };
     Plan {
-        outlines: [(outline, [0.0; 2]); 2],
+        outlines: [(outline.clone(), [0.0; 2]), (outline, [0.0; 2])],
         thickness,
         sites,
         source: Source {
@@ -141,7 +141,7 @@ pub(super) fn lattice(side: usize, pitch: f64) -> Plan {
         size: [side as f64 * pitch; 2],
     };
     Plan {
-        outlines: [(outline, [0.0; 2]); 2],
+        outlines: [(outline.clone(), [0.0; 2]), (outline, [0.0; 2])],
         thickness: [5e-3; 2],
         sites: (0..side * side)
             .map(|index| site([middle(index % side), middle(index / side)], &pair))

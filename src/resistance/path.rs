@@ -314,10 +314,11 @@ impl Cells {
     /// One bolt in the middle of two equal discs, heated all over.
     pub fn is_round(&self) -> bool {
         const ROUNDING: f64 = 1e-9;
-        let [(first, origin), (second, middle)] = self.plan.outlines;
+        let [(first, origin), (second, middle)] = &self.plan.outlines;
         let (Outline::Disc { radius }, Outline::Disc { radius: other }) = (first, second) else {
             return false;
         };
+        let (radius, other) = (*radius, *other);
         let near = |a: f64, b: f64| (a - b).abs() <= ROUNDING * radius;
         let site = &self.plan.sites[0];
         self.plan.sites.len() == 1

@@ -65,6 +65,7 @@ impl Dimension {
             Quantity::Density => Self([-3, 1, 0, 0, 0]),
             Quantity::HeatFlux => Self([0, 1, -3, 0, 0]),
             Quantity::Area => Self([2, 0, 0, 0, 0]),
+            Quantity::Curvature => Self([-1, 0, 0, 0, 0]),
         }
     }
 

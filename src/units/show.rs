@@ -68,7 +68,8 @@ fn scaled(value: f64, quantity: Quantity) -> (f64, &'static str) {
         Quantity::Conductivity
         | Quantity::FilmCoefficient
         | Quantity::Density
-        | Quantity::HeatFlux => (1.0, quantity.unit()),
+        | Quantity::HeatFlux
+        | Quantity::Curvature => (1.0, quantity.unit()),
     };
     (value * factor, unit)
 }

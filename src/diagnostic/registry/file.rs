@@ -130,7 +130,8 @@ pub(super) const ENTRIES: &[Entry] = &[
     fault(
         "file/too-many",
         "More entries than this version reads",
-        "A joint takes at most 10 000 bolts, and a list at most 10 000 entries.",
+        "A joint takes at most 10 000 bolts, a list at most 10 000 entries, an outline 500 points, and a \
+         plate 100 cut-outs, feet or ribs each.",
         "Check the count of the pattern; estimate one cell of a very large field of bolts.",
     ),
     fault(
@@ -140,10 +141,33 @@ pub(super) const ENTRIES: &[Entry] = &[
         "List the points from the lowest pressure to the highest.",
     ),
     fault(
-        "contact/beyond-cone",
-        "A choice that the closed-form cone does not know",
-        "The cone stands for a uniform head, frictionless faces and hard contact; other choices need the \
-         elastic solution of the whole joint.",
-        "Leave `head_model`, `faces` and `compliance` out of [contact].",
+        "map/unreadable",
+        "A table beside the joint file that cannot be read",
+        "The joint file names a measured map of a face by its path, and there is no such text.",
+        "Put the table beside the joint file; the path is relative to the folder of the joint file, \
+         or to the current folder when the joint comes from standard input.",
+    ),
+    fault(
+        "map/header",
+        "A flatness map without the names and units of its columns",
+        "The first line that is no comment names the columns x, y and z, each with its unit of \
+         length in brackets. Without units a map could be wrong a thousandfold.",
+        "Head the table with `x [mm], y [mm], z [µm]`; columns are separated by commas or by \
+         semicolons, and lines that start with # are comments.",
+    ),
+    fault(
+        "map/row",
+        "A line of a flatness map that is not three numbers",
+        "Every line below the header is one measured point: x, y and the height z, as finite \
+         numbers in the units of the header.",
+        "Write decimal points, and leave out points that were not measured.",
+    ),
+    fault(
+        "map/points",
+        "Points that are no map of the face",
+        "A map needs three points or more that are not on one line, each once, near the plate they \
+         describe and no more than 100 000. They are in the plate's own coordinates; z is the height \
+         of the faying face, positive towards the other plate.",
+        "Check the units of the header and the origin of the measurement; thin out a scan.",
     ),
 ];

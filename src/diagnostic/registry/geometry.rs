@@ -9,7 +9,7 @@ pub(super) const ENTRIES: &[Entry] = &[
         "The hole lies outside the plate or cuts its edge. The ring of material that carries the \
          clamp force is then open, and no pressure law for a closed ring holds.",
         "Check the place of the bolt, the size of both plates and the offset between them; places \
-         are measured from the lower left corner of the first plate (round plate: its centre).",
+         are measured from the lower left corner of the first plate (round plate: its centre; outline: as its points).",
     ),
     fault(
         "plate/holes-overlap",
@@ -114,5 +114,67 @@ pub(super) const ENTRIES: &[Entry] = &[
         "A property that bare contact needs is not known",
         "The conductance of bare spots goes with the hardness of the softer face; this material has none.",
         "State `hardness` (Meyer, about 1.08 times the Vickers number in MPa × 9.81) or `microhardness`, fill the joint, or give `[measured]`.",
+    ),
+    fault(
+        "outline/points",
+        "Too few or repeated points of an outline",
+        "An outline is a polygon of at least three different points; it closes from the last to the \
+         first by itself.",
+        "List every corner once, in order along the edge.",
+    ),
+    fault(
+        "outline/crossing",
+        "An outline that meets itself",
+        "Two edges cross, touch or fold back on each other, so that inside and outside are not \
+         defined. Most often two points stand in the wrong order.",
+        "List the corners in the order in which they follow each other along the edge; an opening \
+         is one of the `cutouts`.",
+    ),
+    fault(
+        "outline/no-area",
+        "An outline without area",
+        "All points of the outline lie on one line.",
+        "Check the coordinates; each point is x, then y.",
+    ),
+    fault(
+        "plate/part-outside",
+        "A cut-out, foot or rib off its plate",
+        "Feet and ribs stand on the plate, and cut-outs are made in it: each must lie within it (a \
+         cut-out within the rectangle around the outline).",
+        "Check its place: it is in the plate's own coordinates, as the outline is, whatever the \
+         offset.",
+    ),
+    fault(
+        "plate/swallowed",
+        "Cut-outs that leave nothing of a plate",
+        "Together the cut-outs cover the plate, so that nothing is left to conduct.",
+        "Check the sizes; a cut-out is what is missing, not what stays.",
+    ),
+    fault(
+        "plate/bolt-in-cutout",
+        "A bolt in a cut-out",
+        "The hole or the seat of head or nut reaches into a cut-out: there the ring of plate that \
+         carries the clamp force is open.",
+        "Move the bolt or the cut-out apart by at least the radius of the seat.",
+    ),
+    fault(
+        "plate/head-on-rib",
+        "A head or nut on a rib",
+        "The seat would rest on a rib or wall instead of on the plate, and press there.",
+        "Move the bolt, or end the rib before the seat.",
+    ),
+    fault(
+        "plate/rib-heights",
+        "Ribs of too many heights",
+        "The solver takes up to four heights of ribs per plate; each is a plate of its own thickness \
+         to it.",
+        "Give ribs of nearly the same height one height.",
+    ),
+    fault(
+        "plate/feet",
+        "Feet on both plates",
+        "Feet of one plate stand on the plain face of the other. With feet on both it is not clear \
+         what touches what.",
+        "State feet on one of the two plates only, with the whole height between the faces.",
     ),
 ];

@@ -1,11 +1,21 @@
-//! Cautions on the pressure between the faces.
+//! Cautions on the pressure between the faces, and what its closed form cannot carry.
 
 use crate::diagnostic::registry::{
     Entry,
     Gravity::{Grave, Range},
+    fault,
 };
 
 pub(super) const ENTRIES: &[Entry] = &[
+    fault(
+        "pressure/beyond-cone",
+        "A joint that the closed-form cone cannot carry",
+        "The cone stands for rectangular and round plates of one thickness, flat all over, with \
+         uniform heads, frictionless faces and hard contact. Outlines by points, cut-outs, feet, \
+         ribs, flatness maps, thermal sag and other choices of [contact] need the elastic solution of the whole \
+         joint; a number from the cone would stand for another joint.",
+        "Estimate with `--field elastic`, or take the named fields out to see what the plain joint does.",
+    ),
     Range.entry(
         "pressure/cone-beyond-edge",
         "The pressure cone reaches the edge",

@@ -21,6 +21,10 @@ pub(super) struct Geometry {
 
 impl Geometry {
     pub(super) fn new(joint: &Joint) -> Result<Self, Failure> {
+        let beyond = joint.needs_elastic();
+        if !beyond.is_empty() {
+            return Err(Failure::BeyondCone(beyond));
+        }
         let pairs: Vec<Pair> = joint
             .bolts()
             .map(|(fastener, place)| pair(joint, fastener, place))
@@ -40,7 +44,7 @@ impl Geometry {
             .collect();
         let plates = [joint.warm(), joint.cold()];
         let cells = Arc::new(cells(&Plan {
-            outlines: plates.map(|plate| (plate.outline, plate.origin)),
+            outlines: plates.map(|plate| (plate.outline.clone(), plate.origin)),
             thickness: plates.map(|plate| plate.thickness),
             sites,
             source: joint.source,

@@ -119,7 +119,7 @@ pub static FASTENER: Section = Section {
         field(
             "at",
             Kind::Points,
-            "places, from the lower left corner of the first plate (round: its centre)",
+            "places, from the lower left corner of the first plate (round: its centre; outline: as its points)",
             "[[\"7 mm\", \"7 mm\"], [\"80 mm\", \"7 mm\"]]",
         )
         .within(-100.0, 100.0),

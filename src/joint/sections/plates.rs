@@ -40,10 +40,30 @@ pub static PLATE: Section = Section {
         )
         .within(1e-5, 100.0),
         length("diameter", "diameter of a round plate", "\"60 mm\""),
+        OUTLINE,
+        field(
+            "cutouts",
+            Kind::List(&CUTOUT),
+            "openings through the plate, in its own coordinates",
+            "[{ centre = [\"40 mm\", \"30 mm\"], diameter = \"12 mm\" }]",
+        ),
+        field(
+            "feet",
+            Kind::Table(&FEET),
+            "pads under the faying face, in the plate's own coordinates: only they touch",
+            "{ height = \"3 mm\", at = [{ centre = [\"10 mm\", \"10 mm\"], diameter = \"16 mm\" }] }",
+        )
+        .default("none: the whole face"),
+        field(
+            "ribs",
+            Kind::List(&RIB),
+            "ribs and walls on the outer face, in the plate's own coordinates",
+            "[{ centre = [\"40 mm\", \"30 mm\"], size = [\"4 mm\", \"50 mm\"], height = \"12 mm\" }]",
+        ),
         field(
             "offset",
             Kind::Point,
-            "second plate only: where the corner (round: the centre) of the first plate lies on it",
+            "second plate only: where the corner (round: the centre; outline: the origin of its points) of the first plate lies on it",
             "[\"70 mm\", \"90 mm\"]",
         )
         .within(-100.0, 100.0)
@@ -69,6 +89,18 @@ pub static PLATE: Section = Section {
             "known bow of the faying face",
             "{ kind = \"concave\", height = \"30 µm\" }",
         ),
+        field(
+            "flatness_map",
+            Kind::Text,
+            "measured heights of the faying face, in place of bow: a table beside this file with the header `x [mm], y [mm], z [µm]`, z positive towards the other plate",
+            "\"panel_flatness.csv\"",
+        ),
+        field(
+            "sag",
+            Kind::Table(&SAG),
+            "curvature that temperatures give the plate: one of flux, curvature, bimetal",
+            "{ flux = \"20 kW/m²\" }",
+        ),
         length(
             "hole",
             "hole diameter in this plate, where it differs from that of the fastener",
@@ -88,6 +120,145 @@ pub static PLATE: Section = Section {
             "{ film = \"500 W/(m²·K)\" }",
         )
         .default("the whole back at one temperature"),
+    ],
+};
+
+const OUTLINE: Field = field(
+    "outline",
+    Kind::Points,
+    "corners of an outline, in its own coordinates, either way round; it closes by itself",
+    "[[\"0 mm\", \"0 mm\"], [\"80 mm\", \"0 mm\"], [\"80 mm\", \"40 mm\"], [\"0 mm\", \"60 mm\"]]",
+)
+.within(-100.0, 100.0);
+
+const CENTRE: Field = field(
+    "centre",
+    Kind::Point,
+    "centre, in the plate's own coordinates",
+    "[\"40 mm\", \"30 mm\"]",
+)
+.within(-100.0, 100.0);
+
+const SIZE: Field = field(
+    "size",
+    Kind::Point,
+    "width and height of a rectangle",
+    "[\"20 mm\", \"10 mm\"]",
+)
+.within(1e-5, 100.0);
+
+const DIAMETER: Field = length("diameter", "diameter of a disc", "\"12 mm\"");
+
+/// One of the `cutouts` of a plate.
+pub static CUTOUT: Section = Section {
+    name: "cutout",
+    meaning: "an opening through a plate: size or diameter about a centre, or an outline",
+    shorthand: None,
+    fields: &[CENTRE, SIZE, DIAMETER, OUTLINE],
+};
+
+/// `feet` of a plate.
+pub static FEET: Section = Section {
+    name: "feet",
+    meaning: "pads under the faying face; only they touch",
+    shorthand: None,
+    fields: &[
+        length(
+            "height",
+            "how far the pads stand out of the face",
+            "\"3 mm\"",
+        )
+        .required(),
+        field(
+            "at",
+            Kind::List(&FOOT),
+            "the pads",
+            "[{ centre = [\"10 mm\", \"10 mm\"], diameter = \"16 mm\" }]",
+        )
+        .required(),
+    ],
+};
+
+/// One of the pads of `feet`.
+pub static FOOT: Section = Section {
+    name: "foot",
+    meaning: "a pad: size or diameter about a centre, or an outline",
+    shorthand: None,
+    fields: &[CENTRE, SIZE, DIAMETER, OUTLINE],
+};
+
+/// One of the `ribs` of a plate.
+pub static RIB: Section = Section {
+    name: "rib",
+    meaning: "a part of larger thickness: size or diameter about a centre, or an outline",
+    shorthand: None,
+    fields: &[
+        CENTRE,
+        SIZE,
+        DIAMETER,
+        OUTLINE,
+        length(
+            "height",
+            "how far it stands out of the outer face",
+            "\"12 mm\"",
+        )
+        .required(),
+    ],
+};
+
+/// `sag` of a plate.
+pub static SAG: Section = Section {
+    name: "sag",
+    meaning: "what curves a plate: one of flux, curvature, bimetal",
+    shorthand: None,
+    fields: &[
+        field(
+            "flux",
+            Kind::QuantityOr(Quantity::HeatFlux, &["heat"]),
+            "heat flux through the thickness, from the first plate to the second, or \"heat\": that of the service over the area of the plate; it lifts the centre of the first plate (concave at the faying face) and domes the second towards it (convex)",
+            "\"20 kW/m²\"",
+        )
+        .within(-1e9, 1e9),
+        field(
+            "curvature",
+            Kind::Quantity(Quantity::Curvature),
+            "the curvature itself: positive is concave at the faying face, open in the middle",
+            "\"0.02 1/m\"",
+        )
+        .within(-10.0, 10.0),
+        field(
+            "bimetal",
+            Kind::Table(&BIMETAL),
+            "a second layer bonded to the outer face; one that grows more than the plate makes the faying face concave",
+            "{ material = \"Cu OFHC\", thickness = \"0.5 mm\", change = \"40 K\" }",
+        ),
+    ],
+};
+
+/// `bimetal` of a sag.
+pub static BIMETAL: Section = Section {
+    name: "bimetal",
+    meaning: "a layer bonded to the outer face",
+    shorthand: None,
+    fields: &[
+        field(
+            "material",
+            Kind::Table(&MATERIAL_INLINE),
+            "material of the layer by name, or a table as in [[material]]",
+            "\"Cu OFHC\"",
+        )
+        .required(),
+        length("thickness", "thickness of the layer", "\"0.5 mm\"")
+            .within(1e-7, 1.0)
+            .required(),
+        field(
+            "change",
+            Kind::Quantity(Quantity::TemperatureDifference),
+            "change of temperature since both were flat together; negative when colder",
+            "\"40 K\"",
+        )
+        .within(-2000.0, 2000.0)
+        .required(),
     ],
 };
 

@@ -26,7 +26,7 @@ impl Walk<'_> {
             Form::List(nodes) => nodes.as_slice(),
             Form::Table(entries) if names_tables(entries, section) => {
                 self.collector.report(
-                    wrong_type(stated.node, &format!("`{}`", section.name), "a table")
+                    wrong_type(stated.node, &format!("`{}`", stated.field.key), "a table")
                         .expecting(format!("expected `[[{}]]`", section.name))
                         .help(format!(
                             "head each with `[[{}]]` and put its name inside: `name = \"{}\"`",
@@ -38,8 +38,13 @@ impl Walk<'_> {
             Form::Table(_) => std::slice::from_ref(stated.node),
             _ => {
                 self.collector.report(
-                    wrong_type(stated.node, &format!("`{}`", section.name), "a table")
-                        .help(format!("head it with `[[{}]]`", section.name)),
+                    wrong_type(stated.node, &format!("`{}`", stated.field.key), "a table").help(
+                        if stated.path == section.name {
+                            format!("head it with `[[{}]]`", section.name)
+                        } else {
+                            format!("for example `{}`", stated.field.line())
+                        },
+                    ),
                 );
                 return None;
             }
@@ -51,9 +56,9 @@ impl Walk<'_> {
         for (index, node) in nodes.iter().enumerate() {
             let name = node.text_of("name").or(default_name(section, index));
             let path = match name {
-                Some(name) => format!("{}.{name}", section.name),
-                None if nodes.len() == 1 => section.name.to_owned(),
-                None => format!("{}[{}]", section.name, index + 1),
+                Some(name) => format!("{}.{name}", stated.path),
+                None if nodes.len() == 1 => stated.path.to_owned(),
+                None => format!("{}[{}]", stated.path, index + 1),
             };
             if matches!(node.form, Form::Table(_)) {
                 records.extend(self.record(node, section, &path));

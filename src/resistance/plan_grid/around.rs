@@ -50,7 +50,7 @@ impl PlanGrid {
         };
         let place = |index: usize| (index as f64 + 0.5) * pitch;
         let lattice = Arc::new(cells(&Plan {
-            outlines: [(outline, [0.0; 2]); 2],
+            outlines: [(outline.clone(), [0.0; 2]), (outline, [0.0; 2])],
             thickness: plan.thickness,
             sites: (0..SIDE * SIDE)
                 .map(|index| Site {

@@ -102,6 +102,8 @@ fn stops(plan: &Plan, axis: usize) -> Vec<f64> {
         match *outline {
             Outline::Rectangle { size } => stops.extend([at, at + size[axis]]),
             Outline::Disc { radius } => stops.extend([at - radius, at + radius]),
+            // `cells` refuses polygons before any grid is laid over them.
+            Outline::Polygon { .. } => {}
         }
     }
     match plan.source.zone {

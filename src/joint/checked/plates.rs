@@ -1,0 +1,147 @@
+//! The checked plates: outline, openings, pads, ribs, faces and what bends them.
+
+use std::sync::Arc;
+
+use crate::{
+    catalog::{self, Material},
+    joint::{Bounds, FlatnessMap},
+};
+
+/// One plate.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Plate {
+    /// Name by which other tables and results call it.
+    pub name: String,
+    /// Material, from the catalogue or the file.
+    pub material: Material,
+    /// Thickness, m.
+    pub thickness: f64,
+    /// Outline in plan, in the plate's own coordinates.
+    pub outline: Outline,
+    /// Where the plate's own origin lies in joint coordinates, m.
+    pub origin: [f64; 2],
+    /// The faying face.
+    pub finish: Finish,
+    /// Stated total out-of-flatness of the faying face, m.
+    pub flatness: Option<f64>,
+    /// Height of a known bow, m: positive concave (open at the centre), negative convex.
+    pub bow: Option<f64>,
+    /// Measured heights of the faying face, in place of a bow.
+    pub flatness_map: Option<Arc<FlatnessMap>>,
+    /// Curvature that temperatures give the plate.
+    pub sag: Option<Sag>,
+    /// Openings through the whole thickness.
+    pub cutouts: Vec<Patch>,
+    /// Pads under the faying face; with them only the pads touch.
+    pub feet: Option<Feet>,
+    /// Parts of larger thickness on the outer face.
+    pub ribs: Vec<Rib>,
+}
+
+/// Shape in plan.
+#[derive(Clone, Debug, PartialEq)]
+pub enum Outline {
+    /// From the origin (lower left corner) to `size`, m.
+    Rectangle {
+        /// Width and height, m.
+        size: [f64; 2],
+    },
+    /// About the origin.
+    Disc {
+        /// Radius, m.
+        radius: f64,
+    },
+    /// A simple polygon in either direction, closed from the last point to the first.
+    Polygon {
+        /// Corners, m; at least three.
+        points: Arc<[[f64; 2]]>,
+    },
+}
+
+/// A part of a plate in plan, in the plate's own coordinates.
+#[derive(Clone, Debug, PartialEq)]
+pub enum Patch {
+    /// A rectangle parallel to the axes.
+    Rectangle {
+        /// Centre, m.
+        centre: [f64; 2],
+        /// Width and height, m.
+        size: [f64; 2],
+    },
+    /// A disc.
+    Disc {
+        /// Centre, m.
+        centre: [f64; 2],
+        /// Radius, m.
+        radius: f64,
+    },
+    /// A simple polygon in either direction.
+    Polygon {
+        /// Corners, m; at least three.
+        points: Arc<[[f64; 2]]>,
+    },
+}
+
+/// Pads under a faying face.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Feet {
+    /// How far they stand out of the face, m.
+    pub height: f64,
+    /// Where they stand; at least one.
+    pub at: Vec<Patch>,
+}
+
+/// A part of larger thickness on the outer face: a rib or a wall.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Rib {
+    /// Where it stands.
+    pub patch: Patch,
+    /// How far it stands out of the outer face, m.
+    pub height: f64,
+}
+
+/// What curves a plate; [`crate::joint::Joint::sag_curvature`] gives the curvature.
+#[derive(Clone, Debug, PartialEq)]
+pub enum Sag {
+    /// A heat flux through the thickness, W/m²: positive from the first plate to the second.
+    Flux(f64),
+    /// The stated heat of the joint, evenly over the outline of the plate.
+    Heat,
+    /// The curvature itself, 1/m: positive concave at the faying face.
+    Curvature(f64),
+    /// A second layer on the outer face, which expands by another measure.
+    Bimetal(Box<Bimetal>),
+}
+
+/// A layer bonded to the outer face of a plate.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Bimetal {
+    /// Its material.
+    pub material: Material,
+    /// Its thickness, m.
+    pub thickness: f64,
+    /// Change of temperature since both were flat together, K.
+    pub change: f64,
+}
+
+/// The faying face of a plate.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Finish {
+    /// Root-mean-square roughness Rq, m.
+    pub roughness: Bounds,
+    /// Root-mean-square slope of the asperities, 1.
+    pub slope: f64,
+    /// Factor by which the slope may be off either way, one standard deviation.
+    pub slope_factor: f64,
+    /// What lies on the face.
+    pub coating: Option<Coating>,
+}
+
+/// A plating or film on a face.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Coating {
+    /// The catalogue record.
+    pub plating: catalog::Plating,
+    /// Thickness, m.
+    pub thickness: f64,
+}
