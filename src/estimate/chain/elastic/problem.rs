@@ -1,0 +1,290 @@
+//! A joint as the elastic contact takes it: bodies of layers, interfaces, bolts.
+
+use crate::{
+    estimate::{Failure, Watch, chain::elastic::variant::Variant},
+    joint::{
+        self, Compliance, Engagement, FaceFriction, Fastener, HeadModel, Joint, Plate, Zone,
+    },
+    pressure::elastic::{
+        self, Annulus, Body, Bolt, Cover, End, Faces, Fineness, Head, Height, Interface, Layer,
+        Problem, Progress, Stage,
+    },
+};
+
+/// What a problem asks for besides the joint.
+#[derive(Clone, Copy)]
+pub(super) struct Task<'a> {
+    pub(super) variant: Variant,
+    pub(super) fineness: Fineness,
+    /// Clamp force of each bolt, N.
+    pub(super) forces: &'a [f64],
+    /// Pressure over closure of the asperities, Pa/m.
+    pub(super) asperities: f64,
+    pub(super) most_bytes: u64,
+    pub(super) watch: &'a Watch,
+}
+
+/// Which end of the stack the bolts' threads hold.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub(super) enum Order {
+    /// Heads press on the first plate: the stack stands as in the file.
+    AsListed,
+    /// Heads press on the last plate, threads hold in the first: the stack stands upside down.
+    Reversed,
+}
+
+impl Order {
+    /// The order that puts every threaded plate last.
+    ///
+    /// Through bolts do not mind; threads in both plates are refused.
+    pub(super) fn of(joint: &Joint) -> Result<Self, Failure> {
+        let threaded = joint
+            .fasteners
+            .iter()
+            .filter(|fastener| !matches!(fastener.engagement, Engagement::Nut));
+        let (mut listed, mut reversed) = (false, false);
+        for fastener in threaded {
+            if fastener.head_plate == 0 {
+                listed = true;
+            } else {
+                reversed = true;
+            }
+        }
+        match (listed, reversed) {
+            (true, true) => Err(Failure::ThreadsInBothPlates),
+            (false, true) => Ok(Self::Reversed),
+            _ => Ok(Self::AsListed),
+        }
+    }
+
+    /// Index in the file of a body counted from the heads.
+    pub(super) fn plate(self, body: usize, plates: usize) -> usize {
+        match self {
+            Self::AsListed => body,
+            Self::Reversed => plates - 1 - body,
+        }
+    }
+}
+
+/// Hands the problem of a joint to `work`; the covers live as long as the call.
+pub(super) fn with_problem<T>(
+    joint: &Joint,
+    order: Order,
+    task: &Task,
+    work: impl FnOnce(&Problem) -> T,
+) -> T {
+    let plates: Vec<&Plate> = (0..joint.plates.len())
+        .map(|body| &joint.plates[order.plate(body, joint.plates.len())])
+        .collect();
+    let covers: Vec<Vec<Storey>> = plates
+        .iter()
+        .enumerate()
+        .map(|(body, plate)| storeys(plate, body == 0))
+        .collect();
+    let bodies = plates
+        .iter()
+        .zip(&covers)
+        .map(|(plate, storeys)| body(plate, storeys))
+        .collect();
+    let gap: Box<Height> = Box::new(|point| {
+        task.variant.initial_gap(joint, point)
+    });
+    let interfaces = (1..plates.len())
+        .map(|_| Interface {
+            gap: gap.as_ref(),
+            faces: match task.variant.faces(joint) {
+                FaceFriction::Frictionless => Faces::Frictionless,
+                FaceFriction::Stuck => Faces::Stuck,
+            },
+            compliance: compliance(joint, task),
+        })
+        .collect();
+    let tell = |progress: Progress| task.watch.tell(&told(task.fineness, &progress));
+    let problem = Problem {
+        bodies,
+        interfaces,
+        bolts: bolts(joint, order, task.forces),
+        stops: [0, 1].map(|axis| stops(joint, axis)),
+        head: match task.variant.head(joint) {
+            HeadModel::Uniform => Head::Uniform,
+            HeadModel::Rigid => Head::Rigid,
+        },
+        fineness: task.fineness,
+        most_bytes: task.most_bytes,
+        progress: Some(&tell),
+    };
+    work(&problem)
+}
+
+/// A layer before it is borrowed: where it is, how thick.
+struct Storey<'a> {
+    cover: Box<Cover<'a>>,
+    thickness: f64,
+    main: bool,
+}
+
+/// Layers of a plate, upper first; ribs stand on the outer face, feet on the faying face.
+fn storeys(plate: &Plate, upper: bool) -> Vec<Storey<'_>> {
+    let mut found = ribs(plate);
+    found.reverse();
+    found.push(Storey {
+        cover: Box::new(move |point| plate.covers(point)),
+        thickness: plate.thickness,
+        main: true,
+    });
+    if let Some(feet) = &plate.feet {
+        found.push(Storey {
+            cover: Box::new(move |point| plate.stands_at(point)),
+            thickness: feet.height,
+            main: false,
+        });
+    }
+    if !upper {
+        found.reverse();
+    }
+    found
+}
+
+/// Ribs as layers, from the outer face outwards: each as thick as the step to the next height.
+fn ribs(plate: &Plate) -> Vec<Storey<'_>> {
+    let mut heights: Vec<f64> = plate.ribs.iter().map(|rib| rib.height).collect();
+    heights.sort_by(f64::total_cmp);
+    heights.dedup();
+    let mut below = 0.0;
+    heights
+        .into_iter()
+        .map(|height| {
+            let thickness = height - below;
+            below = height;
+            Storey {
+                cover: Box::new(move |point| {
+                    plate.covers(point)
+                        && plate.ribs.iter().any(|rib| {
+                            rib.height >= height && rib.patch.contains(plate.own(point))
+                        })
+                }),
+                thickness,
+                main: false,
+            }
+        })
+        .collect()
+}
+
+fn body<'a>(plate: &Plate, storeys: &'a [Storey<'a>]) -> Body<'a> {
+    let [left, lower, right, upper] = plate.bounds();
+    let material = &plate.material;
+    Body {
+        layers: storeys
+            .iter()
+            .map(|storey| Layer {
+                cover: storey.cover.as_ref(),
+                thickness: storey.thickness,
+                youngs_modulus: material.youngs_modulus.value,
+                poisson: material.poisson.value,
+                through: None,
+            })
+            .collect(),
+        main: storeys.iter().position(|storey| storey.main).unwrap_or(0),
+        bounds: [[left, right], [lower, upper]],
+    }
+}
+
+/// What yields between the faces besides the plates.
+///
+/// A pad of known stiffness spreads the load; a paste or a fluid flows away from it and leaves the
+/// faces as they are.
+fn compliance(joint: &Joint, task: &Task) -> elastic::Compliance {
+    if let Some(stiffness) = joint.filler.as_ref().and_then(joint::Filler::stiffness) {
+        return elastic::Compliance::Layer { stiffness };
+    }
+    match task.variant.compliance(joint) {
+        Compliance::Hard => elastic::Compliance::Hard,
+        Compliance::Asperities => elastic::Compliance::Asperities {
+            stiffness: task.asperities,
+        },
+    }
+}
+
+fn bolts(joint: &Joint, order: Order, forces: &[f64]) -> Vec<Bolt> {
+    let count = joint.plates.len();
+    joint
+        .bolts()
+        .zip(forces)
+        .map(|((fastener, at), force)| {
+            let (head, end) = ends(fastener, order, count);
+            Bolt {
+                at,
+                head,
+                force: *force,
+                hole_radii: (0..count)
+                    .map(|body| fastener.hole_radius[usize::from(order.plate(body, count) > 0)])
+                    .collect(),
+                end,
+            }
+        })
+        .collect()
+}
+
+/// What presses on the first body and what holds at the last.
+fn ends(fastener: &Fastener, order: Order, plates: usize) -> (Annulus, End) {
+    let annulus = |seat: joint::Seat| Annulus {
+        inner: seat.inner_radius,
+        outer: seat.outer_radius,
+    };
+    let head = annulus(fastener.head_seat);
+    let body_of_head = match order {
+        Order::AsListed => fastener.head_plate,
+        Order::Reversed => plates - 1 - fastener.head_plate,
+    };
+    match fastener.engagement {
+        Engagement::Nut => {
+            let nut = fastener.nut_seat.map_or(head, annulus);
+            if body_of_head == 0 {
+                (head, End::Nut(nut))
+            } else {
+                (nut, End::Nut(head))
+            }
+        }
+        Engagement::Tapped { length } | Engagement::Insert { length } => {
+            let threaded = fastener.hole_radius[usize::from(fastener.head_plate == 0)];
+            (
+                head,
+                End::Thread {
+                    radius: threaded.max(0.5 * fastener.thread.diameter),
+                    length,
+                },
+            )
+        }
+    }
+}
+
+/// Where grid lines are wanted: straight edges of plates and of the heated zone.
+fn stops(joint: &Joint, axis: usize) -> Vec<f64> {
+    let mut found: Vec<f64> = joint
+        .plates
+        .iter()
+        .flat_map(|plate| plate.stops(axis))
+        .collect();
+    if let Zone::Rectangle { centre, size } = joint.source.zone {
+        found.push(centre[axis] - 0.5 * size[axis]);
+        found.push(centre[axis] + 0.5 * size[axis]);
+    }
+    found
+}
+
+fn told(fineness: Fineness, progress: &Progress) -> String {
+    let name = match fineness {
+        Fineness::Coarse => "coarse",
+        Fineness::Fast => "fast",
+        Fineness::Normal => "normal",
+        Fineness::Fine => "fine",
+    };
+    match progress.stage {
+        Stage::Grid => format!("elastic contact, {name}: grid"),
+        Stage::Matrices => format!("elastic contact, {name}: matrices"),
+        Stage::Contact => format!(
+            "elastic contact, {name}: step {}, residual {:.1e}",
+            progress.step, progress.residual
+        ),
+    }
+}

@@ -1,0 +1,87 @@
+//! What a solved field leaves open: how heads press, whether faces slide, what yields, which way
+//! faces are bent.
+
+use crate::joint::{Compliance, FaceFriction, HeadModel, Joint};
+
+/// The joint as stated, or with one thing turned into its opposite.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub(super) enum Variant {
+    /// As the file has it.
+    Stated,
+    /// Heads rigid for uniform and the other way round.
+    OtherHeads,
+    /// Faces stuck for sliding and the other way round.
+    OtherFriction,
+    /// Asperities that yield for hard contact and the other way round.
+    OtherCompliance,
+    /// Flat although the file states a bow, a map or a sag.
+    Flat,
+    /// Stated flatness, −1 convex to 1 concave.
+    Bent(f64),
+}
+
+/// What bounds the form of a solved field.
+pub(super) const FORMS: [Variant; 3] = [
+    Variant::OtherHeads,
+    Variant::OtherFriction,
+    Variant::OtherCompliance,
+];
+
+impl Variant {
+    pub(super) fn head(self, joint: &Joint) -> HeadModel {
+        match (joint.contact.head_model, self) {
+            (HeadModel::Uniform, Self::OtherHeads) => HeadModel::Rigid,
+            (HeadModel::Rigid, Self::OtherHeads) => HeadModel::Uniform,
+            (stated, _) => stated,
+        }
+    }
+
+    pub(super) fn faces(self, joint: &Joint) -> FaceFriction {
+        match (joint.contact.faces, self) {
+            (FaceFriction::Frictionless, Self::OtherFriction) => FaceFriction::Stuck,
+            (FaceFriction::Stuck, Self::OtherFriction) => FaceFriction::Frictionless,
+            (stated, _) => stated,
+        }
+    }
+
+    pub(super) fn compliance(self, joint: &Joint) -> Compliance {
+        match (joint.contact.compliance, self) {
+            (Compliance::Hard, Self::OtherCompliance) => Compliance::Asperities,
+            (Compliance::Asperities, Self::OtherCompliance) => Compliance::Hard,
+            (stated, _) => stated,
+        }
+    }
+
+    /// Initial gap of the faces at a point, m.
+    pub(super) fn initial_gap(self, joint: &Joint, point: [f64; 2]) -> f64 {
+        match self {
+            Self::Flat => 0.0,
+            Self::Bent(place) => {
+                let bent = joint.plates.iter().map(|plate| {
+                    plate.flatness_gap(point, place * loose_flatness(plate))
+                });
+                joint.initial_gap(point) + bent.sum::<f64>()
+            }
+            _ => joint.initial_gap(point),
+        }
+    }
+
+    /// Whether the faces come together flat.
+    pub(super) fn is_flat(self, joint: &Joint) -> bool {
+        match self {
+            Self::Flat => true,
+            Self::Bent(place) => joint.is_flat() && place == 0.0,
+            _ => joint.is_flat(),
+        }
+    }
+}
+
+/// Out-of-flatness of a face that is stated without its shape, m.
+pub(super) fn loose_flatness(plate: &crate::joint::Plate) -> f64 {
+    let shaped = plate.bow.is_some() || plate.flatness_map.is_some();
+    if shaped {
+        0.0
+    } else {
+        plate.flatness.unwrap_or(0.0)
+    }
+}
