@@ -394,6 +394,24 @@ pub struct Filler {
     pub kind: FillerKind,
     /// Factor by which its resistance may be off either way, one standard deviation.
     pub factor: f64,
+    /// Modulus of a layer under pressure over its whole face, Pa; none where it is not known or
+    /// the filler flows.
+    pub modulus: Option<f64>,
+}
+
+impl Filler {
+    /// Pressure over closure of a layer that yields elastically, Pa/m; none for what flows away
+    /// and where no modulus is known.
+    ///
+    /// ```text
+    /// κ = E/t
+    /// ```
+    pub fn stiffness(&self) -> Option<f64> {
+        match self.kind {
+            FillerKind::Layer { thickness, .. } => Some(self.modulus? / thickness),
+            FillerKind::Fluid { .. } | FillerKind::Paste { .. } | FillerKind::Table { .. } => None,
+        }
+    }
 }
 
 /// How a filler conducts.

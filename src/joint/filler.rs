@@ -56,6 +56,7 @@ pub(super) fn read(file: &Record, collector: &mut Collector) -> Option<Option<Fi
         ),
         kind,
         factor: 1.0 + scatter(record, default, collector)?,
+        modulus: None,
     }))
 }
 
