@@ -176,7 +176,7 @@ fn the_map_is_read_between_its_points() {
     assert!(near(map.height_at([0.04, 0.03]), 7e-6));
     assert!(near(map.highest(), 14e-6) && map.lowest().abs() < 1e-20);
     // The gap opens where the face is low.
-    assert!(near(joint.initial_gap([0.04, 0.03]), 7e-6));
+    assert!(near(joint.initial_gap([0.0, 0.0]), 14e-6));
     assert!(!joint.is_flat());
     let scattered =
         "# probe\n\nZ (um); X (m); Y (inch)\n0; 0; 0\n8; 8e-2; 0\n6; 0; 2.362204724409449\r\n";
@@ -223,6 +223,13 @@ fn a_fault_in_a_table_points_into_the_table() {
     assert_eq!(&table[faults.faults[1].1.span.clone()], "zero");
     let shown = faults.shown("joint.toml", Colour::Plain);
     assert!(shown.contains("map.csv:3:5"), "{shown}");
+}
+
+#[test]
+fn a_slip_on_the_last_line_hides_no_fault_of_a_table() {
+    let text = with("flatness_map = \"map.csv\"") + "[contact]\nlaw = elastic";
+    let found = codes(&text, "x [mm], y [mm], z [µm]\n0, 0, high\n");
+    assert_eq!(found, ["file/syntax", "map/row"]);
 }
 
 #[test]
