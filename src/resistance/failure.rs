@@ -25,6 +25,12 @@ pub enum Failure {
         /// The network that found none.
         network: &'static str,
     },
+    /// What was handed over does not belong together.
+    #[error("the columns do not fit: {what}")]
+    Misfit {
+        /// What must hold.
+        what: &'static str,
+    },
     /// A reading is not a number, or infinite where a path leads through.
     #[error("{network} gave {reading} = {value}")]
     NotFinite {
