@@ -3,11 +3,13 @@
 pub mod banded;
 pub mod block_grid;
 pub mod block_tridiagonal;
+pub mod columns;
 pub mod complementarity;
 pub mod condensation;
 pub mod elements;
 pub mod grading;
 pub mod interpolation;
+pub mod multigrid;
 pub mod quadrature;
 pub mod roots;
 pub mod sampling;
