@@ -2,6 +2,7 @@
 
 mod beta;
 pub mod cone;
+pub mod elastic;
 pub mod round;
 
 pub use cone::{Cone, Pair, Profile, cone};

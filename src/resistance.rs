@@ -3,12 +3,13 @@
 //! `cells` cuts the plates into one cell per bolt and its rings, once per geometry; `path` solves
 //! the heat through them for one set of forces and conductances; `field` reads the pressure field.
 //! `plan_grid` solves the heat with the plates whole, for several bolts; `calibration` carries its
-//! answer over to many draws of the fast cells.
+//! answer over to many draws of the fast cells. `columns` solves the bodies in three dimensions.
 
 pub mod annulus;
 mod calibration;
 pub mod cells;
 pub mod column;
+pub mod columns;
 mod failure;
 pub mod field;
 mod neighbours;

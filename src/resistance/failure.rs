@@ -30,6 +30,11 @@ pub enum Failure {
     Polygon {
         /// Index of the plate.
         plate: usize,
+    /// What was handed over does not belong together.
+    #[error("the columns do not fit: {what}")]
+    Misfit {
+        /// What must hold.
+        what: &'static str,
     },
     /// A reading is not a number, or infinite where a path leads through.
     #[error("{network} gave {reading} = {value}")]

@@ -1,0 +1,343 @@
+//! Equations of a clamped stack: layers, loads, and the pairs of faces that may touch.
+
+use std::f64::consts::TAU;
+
+use crate::{
+    numerics::columns::{
+        Disc, Layer, Operator, Plan, Region, Solid, Tie, gradient, lumped, span_loads,
+    },
+    pressure::elastic::{
+        Annulus, Bolt, Compliance, End, Faces, Failure, Head, Layer as Material, Mesh, Problem,
+        Stage, resolution,
+    },
+};
+
+/// Weak springs over all volume, in Young's moduli per squared length of the plan; results do not
+/// change to four digits for a tenth or ten times of it.
+const GROUND: f64 = 1e-6;
+/// Stiffness of stuck faces along themselves, Pa/m.
+const STUCK: f64 = 1e14;
+/// Stiffness of a rigid head against the plate over Young's modulus per bearing radius.
+const SEATED: f64 = 100.0;
+/// Tension of the membrane that makes a head rigid over Young's modulus times bearing radius.
+const MEMBRANE: f64 = 30.0;
+/// Points around the wall of a thread.
+const WALL_POINTS: usize = 720;
+
+/// Equations, loads and contacts.
+pub(super) struct System {
+    /// Elasticity and ties.
+    pub operator: Operator<Solid>,
+    /// Loads of heads, nuts and threads, N.
+    pub load: Vec<f64>,
+    /// Pairs of faces: first the interfaces, upper first, then rigid heads and nuts.
+    pub pairings: Vec<Pairing>,
+    /// Unknowns of the faces of the plates themselves at every interface, upper and lower.
+    pub plates: Vec<[usize; 2]>,
+}
+
+/// Two faces that press on each other where they close.
+pub(super) struct Pairing {
+    /// Normal displacement of the upper face.
+    pub plus: usize,
+    /// Normal displacement of the lower face.
+    pub minus: usize,
+    /// Area of every column, m².
+    pub weight: Vec<f64>,
+    /// Gap without any displacement, m.
+    pub opening: Vec<f64>,
+    /// Pressure over closure, Pa/m.
+    pub stiffness: f64,
+    /// Tie that carries the pressure.
+    pub tie: usize,
+    /// Ties that carry shear where faces stick.
+    pub shear: Option<[usize; 2]>,
+}
+
+impl Pairing {
+    /// Gap at a column, m.
+    pub fn gap(&self, operator: &Operator<Solid>, displacement: &[f64], column: usize) -> f64 {
+        self.opening[column] + displacement[operator.place(column, self.plus)]
+            - displacement[operator.place(column, self.minus)]
+    }
+}
+
+impl System {
+    /// The equations of a problem on its mesh.
+    pub fn new(problem: &Problem, mesh: &Mesh) -> Result<Self, Failure> {
+        problem.tell(Stage::Matrices, 0, f64::NAN);
+        let mut groups: Vec<usize> = mesh.bodies.iter().map(|body| 3 * body.nodes).collect();
+        groups.resize(groups.len() + resolution::loose(problem), 1);
+        let mut operator = Operator::new(&mesh.plan, &groups);
+        for (group, (body, own)) in problem.bodies.iter().zip(&mesh.bodies).enumerate() {
+            for (material, layer) in body.layers.iter().zip(&own.layers) {
+                operator.add_layer(&Layer {
+                    shares: &layer.shares,
+                    group,
+                    first_node: layer.first_node,
+                    heights: &layer.heights,
+                    degree: layer.degree,
+                    constants: solid(material, &mesh.plan),
+                });
+            }
+        }
+        let mut system = Self {
+            load: operator.zeros(),
+            operator,
+            pairings: Vec::new(),
+            plates: Vec::new(),
+        };
+        for interface in 0..problem.interfaces.len() {
+            system.add_interface(problem, mesh, interface)?;
+        }
+        system.add_seats(problem, mesh)?;
+        Ok(system)
+    }
+
+    fn add_interface(
+        &mut self,
+        problem: &Problem,
+        mesh: &Mesh,
+        interface: usize,
+    ) -> Result<(), Failure> {
+        let (operator, meeting) = (&mut self.operator, &problem.interfaces[interface]);
+        let face = &mesh.faces[interface];
+        let [upper, lower] = [interface, interface + 1];
+        let top = mesh.bodies[lower].nodes - 1;
+        let mut opening = vec![0.0; mesh.plan.columns()];
+        for (column, gap) in opening.iter_mut().enumerate() {
+            if face.weight[column] > 0.0 || face.open_weight[column] > 0.0 {
+                *gap = (meeting.gap)(mesh.plan.place(column));
+                if !gap.is_finite() {
+                    return Err(Failure::Unsound {
+                        what: "the initial gap is not a number everywhere".into(),
+                    });
+                }
+            }
+        }
+        let slack = || lumped(&vec![0.0; mesh.plan.columns()]);
+        let mut tie = |component: usize| {
+            operator.add_tie(Tie {
+                plus: operator.unknown(upper, component, 0),
+                minus: Some(operator.unknown(lower, component, top)),
+                stencil: slack(),
+            })
+        };
+        let normal = tie(2);
+        let shear = match meeting.faces {
+            Faces::Frictionless => None,
+            Faces::Stuck => Some([tie(0), tie(1)]),
+        };
+        self.pairings.push(Pairing {
+            plus: operator.unknown(upper, 2, 0),
+            minus: operator.unknown(lower, 2, top),
+            weight: face.weight.clone(),
+            opening,
+            stiffness: meeting.compliance.stiffness(),
+            tie: normal,
+            shear,
+        });
+        let above = mesh.bodies[upper].main_layer().first_node;
+        let below = mesh.bodies[lower].main_layer().last_node();
+        self.plates.push([
+            operator.unknown(upper, 2, above),
+            operator.unknown(lower, 2, below),
+        ]);
+        Ok(())
+    }
+
+    /// Heads on the first body, nuts and threads at the last.
+    fn add_seats(&mut self, problem: &Problem, mesh: &Mesh) -> Result<(), Failure> {
+        let last = mesh.bodies.len() - 1;
+        let top = mesh.bodies[0].main_layer();
+        let foot = mesh.bodies[last].main_layer();
+        let mut heads = Seats::new(mesh, &top.region, -1.0);
+        let mut nuts = Seats::new(mesh, &foot.region, 1.0);
+        for bolt in &problem.bolts {
+            heads.add(mesh, (bolt, bolt.head))?;
+            match bolt.end {
+                End::Nut(seat) => nuts.add(mesh, (bolt, seat))?,
+                End::Thread { radius, length } => {
+                    self.add_thread(mesh, bolt, [radius, length])?;
+                }
+            }
+        }
+        let head_node = self.operator.unknown(0, 2, top.last_node());
+        let nut_node = self.operator.unknown(last, 2, foot.first_node);
+        match problem.head {
+            Head::Uniform => {
+                self.add_load(&heads, head_node);
+                self.add_load(&nuts, nut_node);
+            }
+            Head::Rigid => {
+                let loose = last + 1;
+                let outside = [&problem.bodies[0], &problem.bodies[last]]
+                    .map(|body| body.layers[body.main].youngs_modulus);
+                let head = self.operator.unknown(loose, 0, 0);
+                let radius = problem.bearing_radius();
+                self.add_load(&heads, head);
+                self.add_rigid(
+                    (mesh, &heads),
+                    [head, head_node],
+                    (head, outside[0], radius),
+                );
+                if resolution::loose(problem) == 2 {
+                    let nut = self.operator.unknown(loose + 1, 0, 0);
+                    self.add_load(&nuts, nut);
+                    self.add_rigid((mesh, &nuts), [nut_node, nut], (nut, outside[1], radius));
+                }
+            }
+        }
+        Ok(())
+    }
+
+    fn add_load(&mut self, seats: &Seats, unknown: usize) {
+        for (column, force) in seats.force.iter().enumerate() {
+            self.load[self.operator.place(column, unknown)] += force;
+        }
+    }
+
+    /// A seat that stays flat: a membrane so tight that it does not sag inside a ring, pressed on the
+    /// plate by the load it carries.
+    fn add_rigid(
+        &mut self,
+        (mesh, seats): (&Mesh, &Seats),
+        [plus, minus]: [usize; 2],
+        (membrane, youngs_modulus, radius): (usize, f64, f64),
+    ) {
+        let tension = MEMBRANE * youngs_modulus * radius;
+        let stencil = gradient(&mesh.plan, &seats.region.shares());
+        self.operator.add_tie(Tie {
+            plus: membrane,
+            minus: None,
+            stencil: stencil
+                .into_iter()
+                .map(|row| row.map(|value| tension * value))
+                .collect(),
+        });
+        let columns = mesh.plan.columns();
+        let tie = self.operator.add_tie(Tie {
+            plus,
+            minus: Some(minus),
+            stencil: lumped(&vec![0.0; columns]),
+        });
+        self.pairings.push(Pairing {
+            plus,
+            minus,
+            weight: seats.region.weights(&mesh.plan),
+            opening: vec![0.0; columns],
+            stiffness: SEATED * youngs_modulus / radius,
+            tie,
+            shear: None,
+        });
+    }
+
+    /// Shear of a thread on the wall of its hole, upwards, evenly over its length from the faying face.
+    fn add_thread(
+        &mut self,
+        mesh: &Mesh,
+        bolt: &Bolt,
+        [radius, length]: [f64; 2],
+    ) -> Result<(), Failure> {
+        let last = mesh.bodies.len() - 1;
+        let ring = ring_weights(&mesh.plan, bolt.at, radius);
+        let mut parts = Vec::new();
+        let mut below_face = 0.0;
+        for layer in &mesh.bodies[last].layers {
+            let thickness: f64 = layer.heights.iter().sum();
+            let span = [thickness - (length - below_face), thickness];
+            let filled = layer.region.weights(&mesh.plan);
+            for (node, share) in span_loads(&layer.heights, layer.degree, span)
+                .into_iter()
+                .enumerate()
+            {
+                let unknown = self.operator.unknown(last, 2, layer.first_node + node);
+                for (column, part) in &ring {
+                    if filled[*column] > 0.0 && share != 0.0 {
+                        parts.push((self.operator.place(*column, unknown), part * share));
+                    }
+                }
+            }
+            below_face += thickness;
+        }
+        let whole: f64 = parts.iter().map(|(_, part)| part).sum();
+        if whole <= 0.0 || whole.is_nan() {
+            return Err(Failure::Unsound {
+                what: "a thread lies outside its body".into(),
+            });
+        }
+        for (place, part) in parts {
+            self.load[place] += bolt.force * part / whole;
+        }
+        Ok(())
+    }
+}
+
+/// Rings that press on one face.
+struct Seats<'a> {
+    face: &'a Region,
+    region: Region,
+    force: Vec<f64>,
+    sign: f64,
+}
+
+impl<'a> Seats<'a> {
+    fn new(mesh: &Mesh, face: &'a Region, sign: f64) -> Self {
+        Self {
+            face,
+            region: Region::empty(&mesh.plan),
+            force: vec![0.0; mesh.plan.columns()],
+            sign,
+        }
+    }
+
+    /// Adds the ring of a bolt, cut where the face ends, carrying exactly the bolt's force.
+    fn add(&mut self, mesh: &Mesh, (bolt, seat): (&Bolt, Annulus)) -> Result<(), Failure> {
+        let disc = |radius: f64| {
+            let centre = bolt.at;
+            Region::discs(&mesh.plan, &[Disc { centre, radius }])
+        };
+        let ring = disc(seat.outer).without(&disc(seat.inner)).and(self.face);
+        let weights = ring.weights(&mesh.plan);
+        let area: f64 = weights.iter().sum();
+        if area <= 0.0 {
+            return Err(Failure::Unsound {
+                what: "a head or nut has no plate under it".into(),
+            });
+        }
+        for (force, weight) in self.force.iter_mut().zip(weights) {
+            *force += self.sign * bolt.force * weight / area;
+        }
+        self.region = self.region.or(&ring);
+        Ok(())
+    }
+}
+
+/// Bilinear weights of a circle, summing to the share of it that lies on the plan.
+fn ring_weights(plan: &Plan, [x, y]: [f64; 2], radius: f64) -> Vec<(usize, f64)> {
+    let part = (WALL_POINTS as f64).recip();
+    (0..WALL_POINTS)
+        .filter_map(|point| {
+            let angle = TAU * (point as f64 + 0.5) * part;
+            plan.around([x + radius * angle.cos(), y + radius * angle.sin()])
+        })
+        .flatten()
+        .map(|(column, weight)| (column, weight * part))
+        .collect()
+}
+
+fn solid(material: &Material, plan: &Plan) -> Solid {
+    let (modulus, ratio) = (material.youngs_modulus, material.poisson);
+    let span = |lines: &[f64]| lines[lines.len() - 1] - lines[0];
+    let size = span(&plan.x).powi(2) + span(&plan.y).powi(2);
+    Solid {
+        first: modulus * ratio / ((1.0 + ratio) * (1.0 - 2.0 * ratio)),
+        shear: 0.5 * modulus / (1.0 + ratio),
+        ground: GROUND * modulus / (size * material.thickness),
+    }
+}
+
+/// Stiffness of a pair's shear ties.
+pub(super) fn stuck(compliance: Compliance) -> f64 {
+    STUCK.min(compliance.stiffness())
+}

@@ -1,0 +1,247 @@
+//! One stack with its terminals and conductivities, ready for any local conductance.
+
+use std::sync::Arc;
+
+use crate::resistance::{
+    Failure,
+    columns::{
+        Conductivity, Heat, Health, Stack, Terminals,
+        equations::{Arrangement, Equations},
+        readings::{Reader, blocked},
+        terminals::Ends,
+    },
+};
+
+/// Conduction in a stack; each solution starts from the one before.
+pub struct Conduction {
+    stack: Arc<Stack>,
+    terminals: Terminals,
+    conductivity: Vec<Conductivity>,
+    ends: Ends,
+    equations: Equations,
+}
+
+/// Perfect contact: touching faces share their temperatures. No force and no face moves it.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Perfect {
+    conductivity: Vec<Conductivity>,
+    strengths: Vec<f64>,
+    /// Mean of the heated zones to the mean sink surface, K/W.
+    pub source_to_sink: f64,
+    /// How it was come by.
+    pub health: Health,
+}
+
+impl Perfect {
+    /// Solves the stack as if its touching faces were one.
+    ///
+    /// Checked: `perfect_contact_is_the_limit_of_good_contact`.
+    pub fn new(
+        stack: &Stack,
+        terminals: &Terminals,
+        conductivity: &[Conductivity],
+    ) -> Result<Self, Failure> {
+        check(stack, terminals, conductivity)?;
+        let ends = Ends::new(stack, terminals)?;
+        Self::of(stack, &ends, (terminals, conductivity))
+    }
+
+    fn of(
+        stack: &Stack,
+        ends: &Ends,
+        (terminals, conductivity): (&Terminals, &[Conductivity]),
+    ) -> Result<Self, Failure> {
+        let mut equations =
+            Equations::new(stack, ends, (terminals, conductivity), Arrangement::Merged)?;
+        let health = equations.solve()?;
+        let rise = equations.source_mean() - equations.sink_mean();
+        Ok(Self {
+            conductivity: conductivity.to_vec(),
+            strengths: terminals.bolts.iter().map(|bolt| bolt.strength).collect(),
+            source_to_sink: rise / equations.heat(),
+            health,
+        })
+    }
+
+    /// Whether this is the perfect contact of such bodies and bolts in the same stack.
+    pub fn serves(&self, terminals: &Terminals, conductivity: &[Conductivity]) -> bool {
+        let near = |a: f64, b: f64| (a - b).abs() <= 1e-12 * a.abs();
+        self.conductivity.len() == conductivity.len()
+            && self.strengths.len() == terminals.bolts.len()
+            && self.conductivity.iter().zip(conductivity).all(|(a, b)| {
+                near(a.through, b.through) && (0..2).all(|k| near(a.along[k], b.along[k]))
+            })
+            && self
+                .strengths
+                .iter()
+                .zip(&terminals.bolts)
+                .all(|(a, bolt)| near(*a, bolt.strength))
+    }
+}
+
+impl Conduction {
+    /// Sets up the equations; conductivities in the order of the bodies.
+    pub fn new(
+        stack: &Arc<Stack>,
+        terminals: &Terminals,
+        conductivity: &[Conductivity],
+    ) -> Result<Self, Failure> {
+        check(stack, terminals, conductivity)?;
+        let ends = Ends::new(stack, terminals)?;
+        Self::of(stack, ends, (terminals, conductivity))
+    }
+
+    fn of(
+        stack: &Arc<Stack>,
+        ends: Ends,
+        (terminals, conductivity): (&Terminals, &[Conductivity]),
+    ) -> Result<Self, Failure> {
+        let equations =
+            Equations::new(stack, &ends, (terminals, conductivity), Arrangement::Apart)?;
+        Ok(Self {
+            stack: stack.clone(),
+            terminals: terminals.clone(),
+            conductivity: conductivity.to_vec(),
+            ends,
+            equations,
+        })
+    }
+
+    /// Heat under local conductances, W/(m² K): one for every column of every part of an interface.
+    ///
+    /// ```text
+    /// Σ_bodies ∫ k ∇T · ∇v + Σ_i h_i w_i (T_upper − T_lower)_i (v_upper − v_lower)_i
+    ///     + Σ_bolts G (T̄_head − T̄_seat)(v̄_head − v̄_seat) + sinks = source
+    /// ```
+    ///
+    /// | symbol | quantity | SI unit |
+    /// |---|---|---|
+    /// | `k` | conductivity of a body | W/(m K) |
+    /// | `h_i` | local conductance at a column | W/(m² K) |
+    /// | `w_i` | area of the faces at a column | m² |
+    /// | `G` | strength of a bolt | W/K |
+    ///
+    /// Valid: steady, conductivities constant, no heat through the sides but where a terminal says
+    /// so. Fails where source and sink differ by more than 1e-6.
+    /// Source: the method of columns, this project; compared with its three-dimensional reference.
+    /// Checked: `layout_cases_are_met_with_the_reference_fields`, `manufactured_heat_converges`.
+    pub fn solve(&mut self, conductance: &[Vec<Vec<f64>>]) -> Result<Heat, Failure> {
+        let conductances = self.conductances(conductance)?;
+        if blocked(&self.terminals, &self.ends, &conductances) {
+            return Ok(self.reader(&conductances).blocked());
+        }
+        self.equations.join(&conductances)?;
+        let health = self.equations.solve()?;
+        let heat = self.reader(&conductances).heat(&self.equations, health);
+        for (reading, value) in [
+            ("source to sink", heat.source_to_sink),
+            ("hottest", heat.hottest.rise),
+            ("node to node", heat.node_to_node),
+        ] {
+            if !value.is_finite() {
+                return Err(Failure::NotFinite {
+                    network: "heat through the columns",
+                    reading,
+                    value,
+                });
+            }
+        }
+        Ok(heat)
+    }
+
+    /// Conductivities of the bodies.
+    pub fn conductivity(&self) -> &[Conductivity] {
+        &self.conductivity
+    }
+
+    fn reader<'a>(&'a self, conductances: &'a [Vec<Vec<f64>>]) -> Reader<'a> {
+        Reader {
+            stack: &self.stack,
+            terminals: &self.terminals,
+            conductivity: &self.conductivity,
+            ends: &self.ends,
+            conductances,
+        }
+    }
+
+    /// Local conductance times area, W/K; refuses what is no conductance.
+    fn conductances(&self, conductance: &[Vec<Vec<f64>>]) -> Result<Vec<Vec<Vec<f64>>>, Failure> {
+        let faces = &self.stack.faces;
+        let columns = self.stack.plan.columns();
+        let fits = conductance.len() == faces.len()
+            && conductance.iter().zip(faces).all(|(values, parts)| {
+                values.len() == parts.len() && values.iter().all(|part| part.len() == columns)
+            });
+        if !fits {
+            return Err(Failure::Misfit {
+                what: "local conductance needs one value for every column of every part",
+            });
+        }
+        let mut all = Vec::new();
+        for (values, parts) in conductance.iter().zip(faces) {
+            let mut own = Vec::new();
+            for (values, part) in values.iter().zip(parts) {
+                let mut products = Vec::with_capacity(columns);
+                for (value, weight) in values.iter().zip(&part.weights) {
+                    // Where no area belongs to a column its conductance does not matter.
+                    if *weight > 0.0 && !(value.is_finite() && *value >= 0.0) {
+                        return Err(Failure::NotFinite {
+                            network: "heat through the columns",
+                            reading: "local conductance",
+                            value: *value,
+                        });
+                    }
+                    products.push(if *weight > 0.0 { value * weight } else { 0.0 });
+                }
+                own.push(products);
+            }
+            all.push(own);
+        }
+        Ok(all)
+    }
+}
+
+/// Real and perfect contact at once: neither needs the other, so both cores can have one.
+pub fn solve_both(
+    stack: &Arc<Stack>,
+    (terminals, conductivity): (&Terminals, &[Conductivity]),
+    conductance: &[Vec<Vec<f64>>],
+) -> Result<(Conduction, Heat, Perfect), Failure> {
+    check(stack, terminals, conductivity)?;
+    let ends = Ends::new(stack, terminals)?;
+    let given = (terminals, conductivity);
+    let (real, perfect) = rayon::join(
+        || {
+            let mut conduction = Conduction::of(stack, ends.clone(), given)?;
+            let heat = conduction.solve(conductance)?;
+            Ok::<_, Failure>((conduction, heat))
+        },
+        || Perfect::of(stack, &ends, given),
+    );
+    let (conduction, heat) = real?;
+    Ok((conduction, heat, perfect?))
+}
+
+fn check(
+    stack: &Stack,
+    terminals: &Terminals,
+    conductivity: &[Conductivity],
+) -> Result<(), Failure> {
+    let conducts = |k: f64| k.is_finite() && k > 0.0;
+    let sound = conductivity.len() == stack.bodies.len()
+        && conductivity
+            .iter()
+            .all(|k| conducts(k.through) && k.along.iter().all(|k| conducts(*k)));
+    if !sound {
+        return Err(Failure::Misfit {
+            what: "every body needs conductivities above zero",
+        });
+    }
+    let holds = |bolt: &super::Bolt| bolt.strength.is_finite() && bolt.strength >= 0.0;
+    if !terminals.bolts.iter().all(holds) {
+        return Err(Failure::Misfit {
+            what: "a bolt needs a conductance, zero or above",
+        });
+    }
+    Ok(())
+}

@@ -1,0 +1,375 @@
+//! The equations of a stack with its terminals, and their solution.
+
+use crate::{
+    numerics::{
+        columns::{Conductor, Layer, Operator, Scalar, Tie, lumped},
+        multigrid::{Coarsening, Effort, Factor, Multigrid, conjugate_gradients},
+    },
+    resistance::{
+        Failure,
+        columns::{
+            Conductivity, Health, Stack, Terminals,
+            stack::quarters,
+            terminals::{Ends, Grip, Patch},
+        },
+    },
+};
+
+/// What this solution is called in a failure.
+const SOLVER: &str = "heat through the columns, by conjugate gradients,";
+/// Stiffness of a held face over that of its body through the thickness; the mean of what is left
+/// is taken off, so that only the spread within the face matters: a millionth of the body's own.
+const HELD: f64 = 1e6;
+/// Residual asked for, over the load.
+const TOLERANCE: f64 = 1e-8;
+/// Heat that may be lost between source and sink before the residual is made smaller.
+const BALANCE: f64 = 1e-9;
+/// Heat that may be lost before the solution is refused.
+const LOST: f64 = 1e-6;
+/// Times that the residual is made smaller, each by ten.
+const ROUNDS: usize = 6;
+/// Iterations of one round; usual are 15 to 30.
+const MOST: usize = 400;
+/// Guidance alone: bodies that nothing joins hang together by this share of their stiffness.
+const THREAD: f64 = 1e-6;
+
+/// How bodies meet.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub(super) enum Arrangement {
+    /// Each has its own nodes; local conductances join them.
+    Apart,
+    /// Touching faces share their nodes: perfect contact.
+    Merged,
+}
+
+/// One set of equations, ready for any local conductance.
+pub(super) struct Equations {
+    pub operator: Operator<Scalar>,
+    multigrid: Multigrid<Scalar>,
+    /// For every body its group and its lowest node there.
+    places: Vec<[usize; 2]>,
+    /// For every part of every interface its tie.
+    ties: Vec<Vec<usize>>,
+    load: Vec<f64>,
+    /// Conductance of an isothermal source to the plate below, W/K; none for uniform flux.
+    gripped: Option<f64>,
+    /// Unknowns of the sinks with what they conduct away, W/K.
+    pub drains: Vec<(usize, f64)>,
+    /// Unknowns of the source with the weights of its mean.
+    pub heated: Vec<(usize, f64)>,
+    /// Temperatures of the last solution.
+    pub rise: Vec<f64>,
+    /// Guidance: conductance of the bolts at every column, W/K.
+    beside: Vec<f64>,
+    threads: Vec<f64>,
+}
+
+impl Equations {
+    pub(super) fn new(
+        stack: &Stack,
+        ends: &Ends,
+        (terminals, conductivity): (&Terminals, &[Conductivity]),
+        arrangement: Arrangement,
+    ) -> Result<Self, Failure> {
+        let (groups, places) = arranged(stack, arrangement);
+        let mut operator = Operator::<Scalar>::new(&stack.plan, &groups);
+        for ((body, place), conductivity) in stack.bodies.iter().zip(&places).zip(conductivity) {
+            for (layer, first) in body.layers.iter().zip(body.first_nodes()) {
+                operator.add_layer(&Layer {
+                    shares: &layer.shares,
+                    group: place[0],
+                    first_node: place[1] + first,
+                    heights: &layer.heights,
+                    degree: layer.degree,
+                    constants: conductivity.scalar(),
+                });
+            }
+        }
+        let threads = threads(stack, conductivity);
+        let ties = match arrangement {
+            Arrangement::Merged => Vec::new(),
+            Arrangement::Apart => add_faces(stack, &places, &threads, &mut operator),
+        };
+        let stiffness = |body: usize| {
+            HELD * conductivity[body].through / stack.bodies[body].thickness()
+        };
+        let last = stack.bodies.len() - 1;
+        let unknown = |operator: &Operator<Scalar>, body: usize, node: usize| {
+            operator.unknown(places[body][0], 0, places[body][1] + node)
+        };
+        let mut drains = Vec::new();
+        let in_plane = conductivity[last].along;
+        for (patch, grip) in &ends.sinks {
+            let factor = match grip {
+                Grip::Film(coefficient) => *coefficient,
+                Grip::Held => stiffness(last),
+                Grip::Side(thin) => thin * (in_plane[0] * in_plane[1]).sqrt(),
+            };
+            let plus = unknown(&operator, last, patch.node);
+            let stencil = grip_of(patch, factor);
+            for (column, row) in stencil.iter().enumerate() {
+                let pull: f64 = row.iter().sum();
+                if pull != 0.0 {
+                    drains.push((operator.place(column, plus), pull));
+                }
+            }
+            operator.add_tie(Tie {
+                plus,
+                minus: None,
+                stencil,
+            });
+        }
+        let mut heated = Vec::new();
+        let mut gripped = None;
+        for (patches, share) in &ends.source {
+            let whole: f64 = patches.iter().map(|patch| patch.covered.area()).sum();
+            for patch in patches {
+                let plus = unknown(&operator, 0, patch.node);
+                for (column, weight) in patch.covered.weights.iter().enumerate() {
+                    if *weight != 0.0 {
+                        heated.push((operator.place(column, plus), share * weight / whole));
+                    }
+                }
+                if ends.isothermal {
+                    let factor = stiffness(0);
+                    gripped = Some(factor * whole);
+                    operator.add_tie(Tie {
+                        plus,
+                        minus: None,
+                        stencil: grip_of(patch, factor),
+                    });
+                }
+            }
+        }
+        let mut beside = vec![0.0; stack.plan.columns()];
+        for (bolt, both) in terminals.bolts.iter().zip(&ends.bolts) {
+            let Some([head, seat]) = both.as_ref().filter(|_| bolt.strength > 0.0) else {
+                continue;
+            };
+            let mut entries = Vec::new();
+            for (end, sign) in [(head, 1.0), (seat, -1.0)] {
+                for (body, node, column, weight) in end {
+                    let place = operator.place(*column, unknown(&operator, *body, *node));
+                    entries.push((place, sign * weight));
+                }
+            }
+            for (_, _, column, weight) in head {
+                beside[*column] += bolt.strength * weight;
+            }
+            operator.conductors.push(Conductor {
+                entries,
+                strength: bolt.strength,
+            });
+        }
+        let mut load = operator.zeros();
+        for (place, weight) in &heated {
+            load[*place] += weight * gripped.unwrap_or(1.0);
+        }
+        let multigrid = Multigrid::new(&operator, Coarsening::FULL)
+            .map_err(|_| stopped(0, 1.0))?;
+        Ok(Self {
+            rise: operator.zeros(),
+            operator,
+            multigrid,
+            places,
+            ties,
+            load,
+            gripped,
+            drains,
+            heated,
+            beside,
+            threads,
+        })
+    }
+
+    /// Place of a node in the vector of temperatures.
+    pub(super) fn place(&self, body: usize, node: usize, column: usize) -> usize {
+        let [group, first] = self.places[body];
+        let unknown = self.operator.unknown(group, 0, first + node);
+        self.operator.place(column, unknown)
+    }
+
+    /// Joins the bodies: `conductances` holds one value for every column of every part, W/K.
+    pub(super) fn join(&mut self, conductances: &[Vec<Vec<f64>>]) -> Result<(), Failure> {
+        // Bolts are rank-one terms that the cycle does not feel; it sees them beside the faces.
+        for (parts, ties) in conductances.iter().zip(&self.ties) {
+            for (index, (part, tie)) in parts.iter().zip(ties).enumerate() {
+                let guided: Vec<f64> = if index == 0 {
+                    let extra = self.beside.iter().zip(&self.threads);
+                    part.iter().zip(extra).map(|(g, (b, t))| g + b + t).collect()
+                } else {
+                    part.clone()
+                };
+                self.operator.set_tie(*tie, &guided);
+            }
+        }
+        self.multigrid
+            .renew(&self.operator, Factor::Renewed)
+            .map_err(|_| stopped(0, 1.0))?;
+        for (parts, ties) in conductances.iter().zip(&self.ties) {
+            for (part, tie) in parts.iter().zip(ties) {
+                self.operator.set_tie(*tie, part);
+            }
+        }
+        Ok(())
+    }
+
+    /// Solves from the last temperatures until source and sink agree.
+    pub(super) fn solve(&mut self) -> Result<Health, Failure> {
+        let mut unit = self.operator.zeros();
+        for (place, weight) in &self.heated {
+            unit[*place] += weight;
+        }
+        let unit = self.operator.dot(&unit, &unit).sqrt();
+        let mut health = Health {
+            iterations: 0,
+            residual: f64::INFINITY,
+            balance: f64::INFINITY,
+            unknowns: self.operator.unknowns(),
+        };
+        let mut tolerance = TOLERANCE;
+        for _ in 0..ROUNDS {
+            // A held source loads the equations with far more than passes through them: what
+            // passes is the measure. It is known after the first round.
+            let heat = if self.gripped.is_some() && health.iterations > 0 {
+                self.heat()
+            } else {
+                self.gripped.map_or(1.0, |grip| 1e-3 * grip)
+            };
+            let effort = Effort {
+                tolerance,
+                reference: Some(unit * heat),
+                most: MOST,
+            };
+            let solved = conjugate_gradients(
+                &self.operator,
+                &mut self.multigrid,
+                (&self.load, &mut self.rise),
+                &effort,
+            );
+            let done = health.iterations;
+            let (iterations, residual, stalled) = match solved {
+                Ok(solved) => (solved.iterations, solved.residual, false),
+                Err(stalled) => (stalled.iterations, stalled.residual, true),
+            };
+            health.iterations = done + iterations;
+            health.residual = residual;
+            health.balance = ((self.drained() - self.heat()) / self.heat()).abs();
+            if stalled && !(health.balance < LOST && tolerance < TOLERANCE) {
+                return Err(stopped(health.iterations, residual));
+            }
+            let settled = self.gripped.is_none() || done > 0;
+            if stalled || settled && health.balance <= BALANCE {
+                break;
+            }
+            if settled {
+                tolerance *= 0.1;
+            }
+        }
+        if health.balance.is_nan() || health.balance > LOST {
+            return Err(stopped(health.iterations, health.balance));
+        }
+        Ok(health)
+    }
+
+    /// Heat that enters, W.
+    pub(super) fn heat(&self) -> f64 {
+        self.gripped
+            .map_or(1.0, |grip| grip * (1.0 - self.source_mean()))
+    }
+
+    /// Heat that leaves, W.
+    fn drained(&self) -> f64 {
+        let flows = self.drains.iter().map(|(place, pull)| pull * self.rise[*place]);
+        flows.sum()
+    }
+
+    /// Mean over the heated zones, weighted with their heat.
+    pub(super) fn source_mean(&self) -> f64 {
+        let parts = self.heated.iter().map(|(place, weight)| weight * self.rise[*place]);
+        parts.sum()
+    }
+
+    /// Mean over the sinks, weighted with what they conduct.
+    pub(super) fn sink_mean(&self) -> f64 {
+        self.drained() / self.drains.iter().map(|(_, pull)| pull).sum::<f64>()
+    }
+}
+
+fn stopped(rounds: usize, residual: f64) -> Failure {
+    Failure::NotSolved {
+        solver: SOLVER,
+        rounds,
+        residual,
+    }
+}
+
+/// Groups of unknowns; group and lowest node of every body.
+fn arranged(stack: &Stack, arrangement: Arrangement) -> (Vec<usize>, Vec<[usize; 2]>) {
+    let nodes = stack.bodies.iter().map(super::Body::nodes);
+    match arrangement {
+        Arrangement::Apart => (
+            nodes.collect(),
+            (0..stack.bodies.len()).map(|body| [body, 0]).collect(),
+        ),
+        Arrangement::Merged => {
+            let mut foot = 0;
+            let mut places: Vec<[usize; 2]> = nodes
+                .rev()
+                .map(|count| {
+                    foot += count - 1;
+                    [0, foot + 1 - count]
+                })
+                .collect();
+            places.reverse();
+            (vec![foot + 1], places)
+        }
+    }
+}
+
+/// For guidance, a trifle at every column of an interface, W/K.
+fn threads(stack: &Stack, conductivity: &[Conductivity]) -> Vec<f64> {
+    let through = stack
+        .bodies
+        .iter()
+        .zip(conductivity)
+        .map(|(body, conductivity)| conductivity.through / body.thickness())
+        .fold(f64::INFINITY, f64::min);
+    let mut weights = vec![f64::INFINITY; stack.plan.columns()];
+    for body in &stack.bodies {
+        for layer in [&body.layers[0], &body.layers[body.layers.len() - 1]] {
+            for (weight, own) in weights.iter_mut().zip(quarters(&stack.plan, &layer.shares)) {
+                *weight = weight.min(THREAD * through * own);
+            }
+        }
+    }
+    weights
+}
+
+fn add_faces(
+    stack: &Stack,
+    places: &[[usize; 2]],
+    threads: &[f64],
+    operator: &mut Operator<Scalar>,
+) -> Vec<Vec<usize>> {
+    let unknown = |operator: &Operator<Scalar>, body: usize, node: usize| {
+        operator.unknown(places[body][0], 0, places[body][1] + node)
+    };
+    let mut ties = Vec::new();
+    for (interface, parts) in stack.faces.iter().enumerate() {
+        let mut own = Vec::new();
+        for part in parts {
+            own.push(operator.add_tie(Tie {
+                plus: unknown(operator, interface, part.upper),
+                minus: Some(unknown(operator, interface + 1, part.lower)),
+                stencil: lumped(threads),
+            }));
+        }
+        ties.push(own);
+    }
+    ties
+}
+
+fn grip_of(patch: &Patch, factor: f64) -> Vec<[f64; 9]> {
+    patch.covered.times(factor).stencil
+}
