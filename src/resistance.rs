@@ -3,7 +3,7 @@
 //! `cells` cuts the plates into one cell per bolt and its rings, once per geometry; `path` solves
 //! the heat through them for one set of forces and conductances; `field` reads the pressure field.
 //! `plan_grid` solves the heat with the plates whole, for several bolts; `calibration` carries its
-//! answer over to many draws of the fast cells.
+//! answer over to many draws of the fast cells. `round` solves one bolt in round plates in full.
 
 pub mod annulus;
 mod calibration;
@@ -17,6 +17,7 @@ pub mod path;
 pub mod plan_grid;
 pub mod region;
 mod rings;
+pub mod round;
 
 #[cfg(test)]
 mod fixtures;
