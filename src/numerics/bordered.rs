@@ -7,6 +7,9 @@ use crate::numerics::banded::{BandedMatrix, Factor, NotPositiveDefinite};
 /// One column of the border: rows inside and their values; equal rows add up.
 pub type Column = Vec<(usize, f64)>;
 
+/// Columns that one matrix product takes.
+const STRIP: usize = 24;
+
 /// The matrix after elimination of its inside.
 ///
 /// ```text
@@ -22,7 +25,8 @@ pub struct Bordered {
 }
 
 impl Bordered {
-    /// Eliminates the inside `matrix` K; `border` are the columns of B, `corner` is C.
+    /// Eliminates the inside `matrix` K; `border` are the columns of B, `corner` is C, of which
+    /// the upper half is read.
     ///
     /// # Panics
     /// When a row of the border lies outside the matrix, or the corner is not as wide as the border.
@@ -35,14 +39,17 @@ impl Bordered {
         let order = factor.order();
         let mut half_solved = DMatrix::zeros(order, border.len());
         let columns = half_solved.as_mut_slice().chunks_exact_mut(order.max(1));
-        for (column, entries) in columns.zip(border) {
+        let first_rows: Vec<usize> = border
+            .iter()
+            .map(|entries| entries.iter().map(|(row, _)| *row).min().unwrap_or(order))
+            .collect();
+        for ((column, entries), first) in columns.zip(border).zip(&first_rows) {
             for (row, value) in entries {
                 column[*row] += value;
             }
-            let start = entries.iter().map(|(row, _)| *row).min();
-            factor.forward(column, start.unwrap_or(order));
+            factor.forward(column, *first);
         }
-        corner.gemm(-1.0, &half_solved.transpose(), &half_solved, 1.0);
+        subtract_square(&mut corner, &half_solved, &first_rows);
         Ok(Self {
             factor,
             half_solved,
@@ -74,6 +81,32 @@ impl Bordered {
     pub fn order(&self) -> usize {
         self.factor.order()
     }
+}
+
+/// Takes Yᵀ Y out of a matrix, strip by strip, rows above the first of both strips left out.
+fn subtract_square(corner: &mut DMatrix<f64>, columns: &DMatrix<f64>, first_rows: &[usize]) {
+    let (order, count) = columns.shape();
+    let starts: Vec<usize> = first_rows
+        .chunks(STRIP)
+        .map(|rows| rows.iter().copied().min().unwrap_or(order))
+        .collect();
+    for (one, start) in starts.iter().enumerate() {
+        let strip = one * STRIP..((one + 1) * STRIP).min(count);
+        let left = columns.columns_range(strip.clone()).transpose();
+        for (other, other_start) in starts.iter().enumerate().skip(one) {
+            let first = *start.max(other_start);
+            if first >= order {
+                continue;
+            }
+            let across = other * STRIP..((other + 1) * STRIP).min(count);
+            let right = columns.columns_range(across.clone());
+            let right = right.rows(first, order - first);
+            let mut target = corner.view_range_mut(strip.clone(), across);
+            let left = left.columns(first, order - first);
+            target.gemm(-1.0, &left, &right, 1.0);
+        }
+    }
+    corner.fill_lower_triangle_with_upper_triangle();
 }
 
 #[cfg(test)]

@@ -4,7 +4,7 @@ use std::ops::Range;
 
 use crate::{
     numerics::grading::{Mark, graded},
-    resistance::round::{Inlet, Problem},
+    resistance::round::{Inlet, Outlet, Problem},
 };
 
 /// Lines common to both plates, and lines through each of them.
@@ -39,6 +39,8 @@ const AT_SOURCE: f64 = 0.004;
 const AT_HEAD: f64 = 0.1;
 const AT_HOLE: f64 = 0.15;
 const AT_RIM: f64 = 0.25;
+/// Between two held rims heat may cross in the last corner.
+const AT_HELD_RIM: f64 = 0.03;
 /// Spacings through a plate, in units of the lesser of thickness and bearing radius.
 const AT_INTERFACE: f64 = 0.004;
 const UNDER_SOURCE_EDGE: f64 = 0.008;
@@ -65,6 +67,11 @@ impl Mesh {
             .min(second.thickness);
         let rim = first.rim_radius.max(second.rim_radius);
         let hole = first.hole_radius.min(second.hole_radius);
+        let at_rim = if problem.inlet == Inlet::Rim || problem.outlet == Outlet::Rim {
+            AT_HELD_RIM
+        } else {
+            AT_RIM
+        };
         let mut marks: Vec<Mark> = Vec::new();
         let mut put = |at: f64, spacing: f64| {
             if hole <= at && at <= rim {
@@ -76,7 +83,7 @@ impl Mesh {
         };
         for plate in [first, second] {
             put(plate.hole_radius, AT_HOLE);
-            put(plate.rim_radius, AT_RIM);
+            put(plate.rim_radius, at_rim);
         }
         put(problem.bearing_radius, AT_HEAD);
         put(problem.contact_radius, AT_EDGE);

@@ -234,7 +234,7 @@ impl Plate {
         (given, inside): (&Given, usize),
     ) -> Result<(), NotPositiveDefinite> {
         let level = self.level();
-        let mut matrix = BandedMatrix::new(inside, 5 * nodes.steps + 2);
+        let mut matrix = BandedMatrix::new(inside, nodes.stride() + 2);
         let mut border: Vec<Column> = vec![Vec::new(); level + 3];
         let mut corner = DMatrix::zeros(level + 3, level + 3);
         let mut volume = 0.0;
