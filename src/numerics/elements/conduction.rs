@@ -56,6 +56,11 @@ impl Ring {
                 line[row] = rest[0][column];
             }
         }
+        // Level temperatures drive no heat at all, not even by rounding.
+        for (row, line) in matrix.iter_mut().enumerate() {
+            line[row] = 0.0;
+            line[row] = -line.iter().sum::<f64>();
+        }
         matrix
     }
 

@@ -57,6 +57,8 @@ struct Numbering {
     count: usize,
     shared: [Vec<Unknown>; 2],
     level: [Unknown; 2],
+    /// Level on which both plates stand beside their own.
+    common: Option<usize>,
     /// Whether any node is tied, so that levels and drive are common to both plates.
     joined: bool,
 }
@@ -108,8 +110,10 @@ impl<'a> Join<'a> {
 
     /// Chooses the unknowns.
     ///
-    /// A plate that nothing holds has its level as an unknown and one node at that level. Where the
-    /// plates meet perfectly they share one level. A given flux out leaves one level free: zero.
+    /// A plate that nothing holds has its level as an unknown and one node at that level. Over a
+    /// film both plates stand on one level, and the first has its own above it: neither a weak film
+    /// nor a weak contact then makes small differences of large numbers. Plates that meet perfectly
+    /// share one level. A given flux out leaves one level free: zero.
     fn number(&mut self, levelless: bool) {
         let mut numbering = Numbering {
             joined: self.tied.contains(&true),
@@ -124,19 +128,25 @@ impl<'a> Join<'a> {
         } else {
             0.0
         };
-        if numbering.joined {
-            if loose[0] && loose[1] {
-                let level = if levelless { None } else { numbering.next() };
-                numbering.level = [(level, 0.0); 2];
-            } else if loose[1] {
-                numbering.level[1].1 = self.drive;
-            }
-        } else {
-            for plate in 0..2 {
-                if loose[plate] && !(plate == 1 && levelless) {
-                    numbering.level[plate].0 = numbering.next();
+        match (loose, numbering.joined) {
+            ([true, true], joined) => {
+                if !levelless {
+                    numbering.common = numbering.next();
+                    numbering.level[1].0 = numbering.common;
+                }
+                if !joined {
+                    numbering.level[0].0 = numbering.next();
                 }
             }
+            ([true, false], false) => numbering.level[0].0 = numbering.next(),
+            // The second plate stands near the source where the contact is better than the film.
+            ([false, true], false) => {
+                let near = self.contact() > self.film * second.area;
+                let level = if near { self.drive } else { 0.0 };
+                numbering.level[1] = (numbering.next(), level);
+            }
+            ([false, true], true) => numbering.level[1].1 = self.drive,
+            ([_, false], _) => {}
         }
         for (node, tied) in self.tied.iter().enumerate() {
             let held = [0, 1].map(|plate| self.pair.plates[plate].is_held(node));
@@ -169,6 +179,17 @@ impl<'a> Join<'a> {
         self.numbering = numbering;
     }
 
+    /// Level of both plates that the first has beside its own.
+    fn common_of(&self, plate: usize) -> Option<usize> {
+        self.numbering.common.filter(|_| plate == 0)
+    }
+
+    /// Conductance of all columns where the plates do not meet perfectly, W/K.
+    fn contact(&self) -> f64 {
+        let columns = self.crossing.iter().flatten();
+        columns.flatten().flatten().sum()
+    }
+
     /// Solves the system.
     pub(super) fn solve(&self) -> Result<Meeting, NotPositiveDefinite> {
         let plates = &self.pair.plates;
@@ -199,6 +220,10 @@ impl<'a> Join<'a> {
                 .collect();
             for (column, one) in unknowns.iter().enumerate() {
                 let values = reduced.column(column);
+                // Only the film of the second plate couples a level to more than loads.
+                if let Some(common) = self.common_of(index).filter(|_| column == level) {
+                    load[common] += values[level + 1];
+                }
                 if let Some(i) = one.0 {
                     load[i] += values[level + 1];
                 }
@@ -223,14 +248,12 @@ impl<'a> Join<'a> {
         let [one, other] = [0, 1].map(|plate| numbering.shared[plate][node]);
         let [high, low] = numbering.level;
         let constant = self.drive + one.1 - other.1 + high.1 - low.1;
-        // A common level is no drop.
-        let level = |unknown: Unknown| unknown.0.filter(|_| !numbering.joined);
         (
             [
                 (one.0, 1.0),
                 (other.0, -1.0),
-                (level(high), 1.0),
-                (level(low), -1.0),
+                (high.0, 1.0),
+                (low.0.filter(|_| numbering.common.is_none()), -1.0),
             ],
             constant,
         )
@@ -273,6 +296,9 @@ impl<'a> Join<'a> {
             let head = level + 2;
             shank.resistance -= reduced[(head, head)];
             shank.constant -= sign * reduced[(head, level + 1)];
+            if let Some(common) = self.common_of(index) {
+                shank.difference[common] += sign * reduced[(level, head)];
+            }
             for place in 0..=level {
                 let (unknown, constant) = self.numbering.of(index, place);
                 let weight = sign * reduced[(place, head)];
@@ -321,7 +347,8 @@ impl<'a> Join<'a> {
                 terms.iter().map(sum).sum::<f64>() + constant
             })
             .collect();
-        let base = [self.drive + level[0], level[1]];
+        let common = self.numbering.common.map_or(0.0, |index| solved[index]);
+        let base = [self.drive + level[0] + common, level[1]];
         let across = self.across(
             &drop,
             [

@@ -35,7 +35,7 @@ const GROWTH_THROUGH: f64 = 1.7;
 /// Spacings in units of the thinner plate or of the bearing radius, whichever is less, found by
 /// refining until resistances stood still in the fourth digit.
 const AT_EDGE: f64 = 0.002;
-const AT_SOURCE: f64 = 0.004;
+const AT_SOURCE: f64 = 0.002;
 const AT_HEAD: f64 = 0.1;
 const AT_HOLE: f64 = 0.15;
 const AT_RIM: f64 = 0.25;
@@ -43,7 +43,7 @@ const AT_RIM: f64 = 0.25;
 const AT_HELD_RIM: f64 = 0.03;
 /// Spacings through a plate, in units of the lesser of thickness and bearing radius.
 const AT_INTERFACE: f64 = 0.004;
-const UNDER_SOURCE_EDGE: f64 = 0.008;
+const UNDER_SOURCE_EDGE: f64 = 0.003;
 const UNDER_HEAD: f64 = 0.1;
 /// Widest spacing through a plate, in units of its thickness.
 const THROUGH: f64 = 0.3;

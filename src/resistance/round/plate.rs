@@ -300,6 +300,9 @@ impl Plate {
         border[level + 1] = self.inside_rows(heat);
         border[level + 2] = self.inside_rows(head.into_iter());
         self.condensed = Bordered::new(matrix, &border, corner)?;
+        if !self.anchored {
+            level_rows(&mut self.condensed.reduced, level);
+        }
         Ok(())
     }
 
@@ -371,6 +374,15 @@ impl Plate {
     /// Unknown temperatures of the plate.
     pub(super) fn unknowns(&self) -> usize {
         self.condensed.order() + self.shared.len()
+    }
+}
+
+/// Takes out what rounding lets a raised level drive between the shared nodes of a loose plate: the
+/// rows of the conductances add up to the column of the level.
+fn level_rows(reduced: &mut DMatrix<f64>, level: usize) {
+    for row in 0..level {
+        let sum: f64 = (0..level).map(|column| reduced[(row, column)]).sum();
+        reduced[(row, row)] -= sum - reduced[(row, level)];
     }
 }
 
