@@ -3,8 +3,12 @@
 use std::{collections::BTreeMap, f64::consts::PI};
 
 use ringsum::{
+    conductance::{Face, GapGas, Hardness, Interface, Local},
+    joint,
     pressure::round::{self, Faces, Head, Solution},
-    resistance::round::{Condensed, Disc, Heat, Inlet, Outlet, Patch, Problem, condense},
+    resistance::round::{
+        Condensed, Disc, Heat, Inlet, Law, Outlet, Patch, Problem, condense, heat_under,
+    },
 };
 use serde::Deserialize;
 
@@ -677,4 +681,138 @@ fn nonsense_is_refused_without_a_panic() {
     for local in [f64::NAN, -1e9] {
         assert!(plates.solve(|_| local).is_err(), "{local}");
     }
+}
+
+/// An aluminium pair of 5 mm plates about one M5, its contact and its condensed plates.
+fn aluminium() -> (Solution, Condensed) {
+    let contact = round::solve(&round::Problem {
+        hole_radius: 2.75e-3,
+        bearing_radius: 4.5e-3,
+        rim_radius: 25e-3,
+        thickness: [5e-3; 2],
+        youngs_modulus: [68.9e9; 2],
+        poisson: [0.33; 2],
+        head: Head::Uniform,
+        faces: Faces::Frictionless,
+        tolerance: 0.001,
+    })
+    .unwrap();
+    let disc = Disc {
+        hole_radius: 2.75e-3,
+        rim_radius: 25e-3,
+        thickness: 5e-3,
+        conductivity: [167.0; 2],
+    };
+    let plates = condense(&Problem {
+        plates: [disc; 2],
+        bearing_radius: 4.5e-3,
+        contact_radius: contact.contact_radius,
+        inlet: Inlet::Flux(FACE),
+        outlet: Outlet::Film(2000.0),
+        shank: 0.0,
+    })
+    .unwrap();
+    (contact, plates)
+}
+
+/// Bead-blasted aluminium faces, in vacuum or in air.
+fn faces(gas: Option<GapGas>) -> Local {
+    let face = Face {
+        conductivity: 167.0,
+        roughness: 1e-6,
+        slope: 0.12,
+        youngs_modulus: 68.9e9,
+        poisson: 0.33,
+        hardness: Hardness::Meyer(1.15e9),
+        emissivity: 0.0,
+        coating: None,
+    };
+    Interface {
+        faces: [face.clone(), face],
+        law: joint::Law::ElasticPlastic,
+        gas,
+        temperature: 293.0,
+        filler: None,
+        measured: None,
+        solid_factor: 1.0,
+        filler_factor: 1.0,
+    }
+    .prepare()
+}
+
+const AIR: GapGas = GapGas {
+    conductivity: 0.026,
+    parameter: 0.3e-6,
+};
+
+#[test]
+fn torque_changes_only_what_crosses() {
+    let (contact, plates) = aluminium();
+    let local = faces(None);
+    let law = Law {
+        closed: |pressure| local.total(pressure),
+        parted: |opening| local.parted(opening),
+    };
+    let forces = [1250.0, 2500.0, 5000.0, 10_000.0];
+    let found = heat_under(&plates, (&contact, &forces), &law).unwrap();
+    for pair in found.windows(2) {
+        let [slack, tight] = [&pair[0], &pair[1]];
+        assert!(tight.path.source_to_sink < slack.path.source_to_sink);
+        assert!(tight.path.contact > slack.path.contact);
+        assert!(tight.path.perfect_contact.to_bits() == slack.path.perfect_contact.to_bits());
+    }
+    for (force, heat) in forces.iter().zip(&found) {
+        // In vacuum nothing crosses beyond the contact.
+        let direct = plates
+            .solve(|r| match contact.pressure(r, *force) {
+                pressure if pressure > 0.0 => local.total(pressure),
+                _ => 0.0,
+            })
+            .unwrap();
+        assert_eq!(*heat, direct, "{force}");
+    }
+}
+
+#[test]
+fn parted_faces_conduct_by_their_gap() {
+    let (contact, plates) = aluminium();
+    let local = faces(Some(AIR));
+    let law = Law {
+        closed: |pressure| local.total(pressure),
+        parted: |opening| local.parted(opening),
+    };
+    let touching = Law {
+        closed: |pressure| local.total(pressure),
+        parted: |_| local.unloaded(),
+    };
+    let vacuum = faces(None);
+    let empty = Law {
+        closed: |pressure| vacuum.total(pressure),
+        parted: |opening| vacuum.parted(opening),
+    };
+    let forces = [2500.0, 5000.0];
+    let [parted, touching, empty] = [
+        heat_under(&plates, (&contact, &forces), &law),
+        heat_under(&plates, (&contact, &forces), &touching),
+        heat_under(&plates, (&contact, &forces), &empty),
+    ]
+    .map(|found| -> Vec<f64> {
+        let found = found.unwrap();
+        found.iter().map(|heat| heat.path.source_to_sink).collect()
+    });
+    for force in 0..2 {
+        assert!(touching[force] < parted[force] && parted[force] < empty[force]);
+    }
+    // Beyond the contact more force opens the gap, and with its gap a face conducts less.
+    let radius = 20e-3;
+    let local_at = |force: f64| law.at(&contact, [force, radius]);
+    assert!(local_at(5000.0) < local_at(2500.0) && local_at(2500.0) < local.unloaded());
+    let opening = contact.gap(radius, 5000.0);
+    assert!(local_at(5000.0).to_bits() == local.parted(opening).to_bits());
+    // Distance through the gas: the opening beside what rough faces leave, here a few micrometres.
+    let distance = AIR.conductivity / local_at(5000.0) - opening;
+    assert!((4e-6..8e-6).contains(&distance), "{distance:.2e}");
+    // Beyond the plates of the contact the gap at its rim holds.
+    let rim = law.at(&contact, [5000.0, 25e-3]);
+    assert!(law.at(&contact, [5000.0, 30e-3]).to_bits() == rim.to_bits());
 }
