@@ -163,7 +163,7 @@ impl Condensed {
 
     fn between(&self, conductance: impl Fn(f64) -> f64) -> Result<f64, Failure> {
         let fields = self.fields(&self.fine, &conductance)?;
-        Ok(self.source_to_sink(&self.fine, &fields))
+        Ok(self.fine.source_to_sink(&fields))
     }
 
     fn fields(&self, pair: &Pair, conductance: impl Fn(f64) -> f64) -> Result<Meeting, Failure> {
@@ -262,10 +262,11 @@ impl Problem {
         }
     }
 
-    /// Whether heat leaves evenly over the whole back.
-    fn has_even_outlet(&self) -> bool {
-        self.patch(1)
-            .is_some_and(|patch| patch == Patch::Face.radii(&self.plates[1]))
+    /// Whether what is given on the outer face of a plate, if anything, is given on all of it.
+    fn covers(&self, plate: usize) -> bool {
+        let disc = &self.plates[plate];
+        self.patch(plate)
+            .is_none_or(|[inner, outer]| inner <= disc.hole_radius && disc.rim_radius <= outer)
     }
 
     /// Refuses what no grid can be laid over or no heat balance closed for.

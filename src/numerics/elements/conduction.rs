@@ -28,7 +28,11 @@ pub struct EdgePoint {
 }
 
 impl Ring {
-    /// Conductance of the whole ring, ∫ (k_r ∂φ/∂r ∂ψ/∂r + k_z ∂φ/∂z ∂ψ/∂z) 2πr dr dz.
+    /// Conductance of the whole ring.
+    ///
+    /// ```text
+    /// ∫ (k_r ∂φ/∂r ∂ψ/∂r + k_z ∂φ/∂z ∂ψ/∂z) 2πr dr dz
+    /// ```
     ///
     /// Conductivities k along the radius and along the axis. Nine Gauss points: exact on rectangles.
     /// Checked: `linear_fields_have_their_dissipation`, `level_temperatures_drive_no_heat`.
@@ -43,10 +47,10 @@ impl Ring {
                 weight * radial / half[0].powi(2),
                 weight * axial / half[1].powi(2),
             );
-            for i in 0..NODES {
-                for j in 0..=i {
-                    matrix[i][j] += along * point.by_xi[i] * point.by_xi[j]
-                        + through * point.by_eta[i] * point.by_eta[j];
+            for (i, line) in matrix.iter_mut().enumerate() {
+                let (by_r, by_z) = (along * point.by_xi[i], through * point.by_eta[i]);
+                for (j, value) in line.iter_mut().enumerate().take(i + 1) {
+                    *value += by_r * point.by_xi[j] + by_z * point.by_eta[j];
                 }
             }
         }

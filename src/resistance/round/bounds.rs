@@ -57,7 +57,7 @@ impl Condensed {
         let outlet = match self.problem.outlet {
             Outlet::IsothermalBack => RingOutlet::Film(f64::INFINITY),
             Outlet::Film(film) => RingOutlet::Film(film),
-            Outlet::Flux(_) if self.problem.has_even_outlet() => RingOutlet::Flux(area.recip()),
+            Outlet::Flux(_) if self.problem.covers(1) => RingOutlet::Flux(area.recip()),
             Outlet::Flux(_) => return None,
             Outlet::Rim => RingOutlet::Rim,
         };

@@ -64,9 +64,9 @@ struct Numbering {
 }
 
 impl Numbering {
-    fn next(&mut self) -> Option<usize> {
+    fn next(&mut self) -> usize {
         self.count += 1;
-        Some(self.count - 1)
+        self.count - 1
     }
 
     /// Unknown of a place in the border of a plate: shared nodes, then the level.
@@ -131,19 +131,19 @@ impl<'a> Join<'a> {
         match (loose, numbering.joined) {
             ([true, true], joined) => {
                 if !levelless {
-                    numbering.common = numbering.next();
+                    numbering.common = Some(numbering.next());
                     numbering.level[1].0 = numbering.common;
                 }
                 if !joined {
-                    numbering.level[0].0 = numbering.next();
+                    numbering.level[0].0 = Some(numbering.next());
                 }
             }
-            ([true, false], false) => numbering.level[0].0 = numbering.next(),
+            ([true, false], false) => numbering.level[0].0 = Some(numbering.next()),
             // The second plate stands near the source where the contact is better than the film.
             ([false, true], false) => {
                 let near = self.contact() > self.film * second.area;
                 let level = if near { self.drive } else { 0.0 };
-                numbering.level[1] = (numbering.next(), level);
+                numbering.level[1] = (Some(numbering.next()), level);
             }
             ([false, true], true) => numbering.level[1].1 = self.drive,
             ([_, false], _) => {}
@@ -164,14 +164,14 @@ impl<'a> Join<'a> {
             } else if held[0] || pins[0] {
                 (None, 0.0)
             } else {
-                (numbering.next(), 0.0)
+                (Some(numbering.next()), 0.0)
             };
             let other = if *tied {
                 (one.0, one.1 + shift)
             } else if held[1] || pins[1] {
                 (None, 0.0)
             } else {
-                (numbering.next(), shift)
+                (Some(numbering.next()), shift)
             };
             numbering.shared[0].push(one);
             numbering.shared[1].push(other);

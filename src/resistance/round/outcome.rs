@@ -5,9 +5,9 @@ use crate::{
     resistance::{
         path::Path,
         round::{
-            Condensed, Pair, Patch,
+            Condensed, Pair,
             join::{Fields, Meeting},
-            plate::weighted,
+            plate::{Plate, weighted},
         },
     },
 };
@@ -76,6 +76,39 @@ struct Readings {
     sink: f64,
 }
 
+impl Pair {
+    /// Source to sink, K/W.
+    pub(super) fn source_to_sink(&self, meeting: &Meeting) -> f64 {
+        match meeting {
+            Meeting::Blocked => f64::INFINITY,
+            Meeting::Shorted => 0.0,
+            Meeting::Flowing(fields) => {
+                let readings = Readings::of(self, fields);
+                (readings.source - readings.sink) / readings.heat
+            }
+        }
+    }
+}
+
+impl Readings {
+    fn of(pair: &Pair, fields: &Fields) -> Self {
+        let [first, second] = &pair.plates;
+        Self {
+            heat: fields.heat[0],
+            source: if first.anchored {
+                1.0
+            } else {
+                fields.base[0] + weighted(&first.patch_mean, &fields.theta[0])
+            },
+            sink: if second.anchored {
+                0.0
+            } else {
+                fields.base[1] + weighted(&second.patch_mean, &fields.theta[1])
+            },
+        }
+    }
+}
+
 impl Condensed {
     pub(super) fn heat(
         &self,
@@ -87,7 +120,7 @@ impl Condensed {
         let mut path = Path {
             contact,
             contact_per_bolt: vec![contact],
-            source_to_sink: self.source_to_sink(&self.fine, fine),
+            source_to_sink: self.fine.source_to_sink(fine),
             coolant_drop: self.coolant_drop(),
             perfect_contact: self.perfect,
             added_by_joint: 0.0,
@@ -109,7 +142,7 @@ impl Condensed {
             health: Health {
                 heat_balance: 0.0,
                 coarser_grid: 0.0,
-                unknowns: self.fine.plates.iter().map(|plate| plate.unknowns()).sum(),
+                unknowns: self.fine.plates.iter().map(Plate::unknowns).sum(),
             },
             path,
         };
@@ -117,7 +150,7 @@ impl Condensed {
             Meeting::Flowing(fields) => {
                 self.tell(fields, &mut heat);
                 heat.health.coarser_grid =
-                    self.source_to_sink(&self.coarse, coarse) / heat.path.source_to_sink - 1.0;
+                    self.coarse.source_to_sink(coarse) / heat.path.source_to_sink - 1.0;
             }
             Meeting::Blocked => {}
             Meeting::Shorted => {
@@ -132,12 +165,12 @@ impl Condensed {
     /// Reads temperatures and balance of heat that flows.
     fn tell(&self, fields: &Fields, heat: &mut Heat) {
         let plates = &self.fine.plates;
-        let readings = self.readings(&self.fine, fields);
+        let readings = Readings::of(&self.fine, fields);
         let per_watt = |value: f64| (value - readings.sink) / readings.heat;
         let at =
             |plate: usize, node: usize| per_watt(fields.base[plate] + fields.theta[plate][node]);
-        for plate in 0..2 {
-            let mean: f64 = plates[plate]
+        for (plate, solved) in plates.iter().enumerate() {
+            let mean: f64 = solved
                 .volume_mean
                 .iter()
                 .zip(&fields.theta[plate])
@@ -145,14 +178,11 @@ impl Condensed {
                 .sum();
             heat.plate_mean[plate] = per_watt(fields.base[plate] + mean);
             let profile = |nodes: &[usize]| Profile {
-                radii: nodes
-                    .iter()
-                    .map(|node| plates[plate].at[*node][0])
-                    .collect(),
+                radii: nodes.iter().map(|node| solved.at[*node][0]).collect(),
                 temperatures: nodes.iter().map(|node| at(plate, *node)).collect(),
             };
-            heat.profiles.inner[plate] = profile(&plates[plate].foot);
-            heat.profiles.outer[plate] = profile(&plates[plate].outer);
+            heat.profiles.inner[plate] = profile(&solved.foot);
+            heat.profiles.outer[plate] = profile(&solved.outer);
         }
         heat.path.node_to_node = heat.plate_mean[0] - heat.plate_mean[1];
         heat.path.interface_drop = self.mean_drop(&fields.drop) / readings.heat;
@@ -170,34 +200,6 @@ impl Condensed {
         let [entering, across, leaving] = fields.heat;
         let off = (entering - across).abs().max((across - leaving).abs());
         heat.health.heat_balance = off / readings.heat.abs();
-    }
-
-    pub(super) fn source_to_sink(&self, pair: &Pair, meeting: &Meeting) -> f64 {
-        match meeting {
-            Meeting::Blocked => f64::INFINITY,
-            Meeting::Shorted => 0.0,
-            Meeting::Flowing(fields) => {
-                let readings = self.readings(pair, fields);
-                (readings.source - readings.sink) / readings.heat
-            }
-        }
-    }
-
-    fn readings(&self, pair: &Pair, fields: &Fields) -> Readings {
-        let [first, second] = &pair.plates;
-        Readings {
-            heat: fields.heat[0],
-            source: if first.anchored {
-                1.0
-            } else {
-                fields.base[0] + weighted(&first.patch_mean, &fields.theta[0])
-            },
-            sink: if second.anchored {
-                0.0
-            } else {
-                fields.base[1] + weighted(&second.patch_mean, &fields.theta[1])
-            },
-        }
     }
 
     /// Ring sum over the shared face, W/K.
@@ -231,9 +233,6 @@ impl Condensed {
 
     /// Whether heat is given, or the temperature held, on the whole outer face or rim.
     pub(super) fn is_heated_all_over(&self) -> bool {
-        let disc = &self.problem.plates[0];
-        self.problem
-            .patch(0)
-            .is_none_or(|patch| patch == Patch::Face.radii(disc))
+        self.problem.covers(0)
     }
 }

@@ -257,7 +257,7 @@ impl Plate {
                             (Place::Inside(a), Place::Inside(b)) => matrix.add(a, b, value),
                             (Place::Inside(row), Place::Border(b))
                             | (Place::Border(b), Place::Inside(row)) => {
-                                border[b].push((row, value))
+                                border[b].push((row, value));
                             }
                             (Place::Border(a), Place::Border(b)) => {
                                 corner[(a, b)] += value;
