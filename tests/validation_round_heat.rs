@@ -26,11 +26,13 @@ struct Contact {
 }
 
 #[derive(Deserialize)]
-#[allow(non_snake_case)]
 struct Resistances {
-    R_zone: f64,
-    R_total: BTreeMap<String, f64>,
-    R_total_with_gap: BTreeMap<String, f64>,
+    #[serde(rename = "R_zone")]
+    zone: f64,
+    #[serde(rename = "R_total")]
+    total: BTreeMap<String, f64>,
+    #[serde(rename = "R_total_with_gap")]
+    with_gap: BTreeMap<String, f64>,
 }
 
 #[derive(Deserialize)]
@@ -129,7 +131,10 @@ fn solved(problem: &Problem, conductance: impl Fn(f64) -> f64) -> Heat {
 fn each_case(mut visit: impl FnMut(&Case, &str, &Condensed, &dyn Fn(f64) -> f64)) {
     let contacts = contacts();
     for case in data().cases {
-        let contact = contacts.iter().find(|one| one.id == case.id).unwrap();
+        let contact = contacts
+            .iter()
+            .find(|one| one.id == case.id)
+            .expect("the case is listed");
         let field = contact.solved();
         let shape = |r: f64| field.pressure(r, contact.force()).powf(0.95);
         for name in case.bc.keys() {
@@ -147,16 +152,16 @@ fn public_cases_are_met() {
     let mut compared = 0;
     each_case(|case, name, plates, shape| {
         let listed = &case.bc[name];
-        let zone = plates.perfect_in_zone() / listed.R_zone - 1.0;
+        let zone = plates.perfect_in_zone() / listed.zone - 1.0;
         assert!(zone.abs() < 0.005, "{} {name} zone {zone:+.5}", case.id);
-        for (biot, wanted) in &listed.R_total {
+        for (biot, wanted) in &listed.total {
             let bi: f64 = biot.parse().unwrap();
             let place = format!("{} {name} {biot}", case.id);
             let heat = plates.solve(|r| bi * shape(r)).unwrap();
             let off = heat.path.source_to_sink / wanted - 1.0;
             assert!(off.abs() < 0.001, "{place}: {off:+.5}");
             let gap = plates.solve(|r| bi * (shape(r) + 0.02)).unwrap();
-            let off = gap.path.source_to_sink / listed.R_total_with_gap[biot] - 1.0;
+            let off = gap.path.source_to_sink / listed.with_gap[biot] - 1.0;
             // Between rims held ten conductivities apart heat crosses in the last corner, where the
             // reference is coarse: its 0.253036 became 0.253348 with ten times as many lines there,
             // and this solver gives 0.253333.
@@ -274,7 +279,11 @@ fn composite_wall(plane: f64, rounding: f64) {
         same(path.resistance_lower, first + between + second, &what);
         same(heat.plate_mean[1], 0.5 * second, &what);
         if outlet == Outlet::Film(0.8) {
-            same(path.coolant_drop.unwrap(), 1.0 / (0.8 * area), &what);
+            same(
+                path.coolant_drop.expect("a film"),
+                1.0 / (0.8 * area),
+                &what,
+            );
         } else {
             assert_eq!(path.coolant_drop, None);
         }
@@ -696,7 +705,7 @@ fn aluminium() -> (Solution, Condensed) {
         faces: Faces::Frictionless,
         tolerance: 0.001,
     })
-    .unwrap();
+    .expect("the contact converges");
     let disc = Disc {
         hole_radius: 2.75e-3,
         rim_radius: 25e-3,
@@ -711,7 +720,7 @@ fn aluminium() -> (Solution, Condensed) {
         outlet: Outlet::Film(2000.0),
         shank: 0.0,
     })
-    .unwrap();
+    .expect("the plates condense");
     (contact, plates)
 }
 
