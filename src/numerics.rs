@@ -3,6 +3,7 @@
 pub mod banded;
 pub mod block_grid;
 pub mod block_tridiagonal;
+pub mod bordered;
 pub mod columns;
 pub mod complementarity;
 pub mod condensation;

@@ -3,7 +3,8 @@
 //! `cells` cuts the plates into one cell per bolt and its rings, once per geometry; `path` solves
 //! the heat through them for one set of forces and conductances; `field` reads the pressure field.
 //! `plan_grid` solves the heat with the plates whole, for several bolts; `calibration` carries its
-//! answer over to many draws of the fast cells. `columns` solves the bodies in three dimensions.
+//! answer over to many draws of the fast cells. `round` solves one bolt in round plates in full,
+//! `columns` any stack of bodies in three dimensions.
 
 pub mod annulus;
 mod calibration;
@@ -18,6 +19,7 @@ pub mod path;
 pub mod plan_grid;
 pub mod region;
 mod rings;
+pub mod round;
 
 #[cfg(test)]
 mod fixtures;

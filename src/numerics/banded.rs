@@ -124,13 +124,31 @@ impl Factor {
     /// # Panics
     /// When the right-hand side is shorter than the matrix.
     pub fn solve(&self, rhs: &mut [f64]) {
+        self.forward(rhs, 0);
+        self.backward(rhs);
+    }
+
+    /// Replaces a right-hand side b by L⁻¹ b; entries before `start` must be zero.
+    ///
+    /// # Panics
+    /// When the right-hand side is shorter than the matrix.
+    pub fn forward(&self, rhs: &mut [f64], start: usize) {
         let width = self.lower.half_bandwidth;
         let stride = width + 1;
-        for row in 0..self.lower.order {
-            let first = row.saturating_sub(width);
+        for row in start..self.lower.order {
+            let first = row.saturating_sub(width).max(start);
             let left = &self.lower.rows[row * stride + width - (row - first)..][..row - first];
             rhs[row] = (rhs[row] - dot(left, &rhs[first..row])) * self.inverse_diagonal[row];
         }
+    }
+
+    /// Replaces a right-hand side b by L⁻ᵀ b.
+    ///
+    /// # Panics
+    /// When the right-hand side is shorter than the matrix.
+    pub fn backward(&self, rhs: &mut [f64]) {
+        let width = self.lower.half_bandwidth;
+        let stride = width + 1;
         for row in (0..self.lower.order).rev() {
             let first = row.saturating_sub(width);
             let solved = rhs[row] * self.inverse_diagonal[row];
@@ -140,6 +158,11 @@ impl Factor {
                 *value -= entry * solved;
             }
         }
+    }
+
+    /// Number of rows.
+    pub fn order(&self) -> usize {
+        self.lower.order
     }
 }
 

@@ -1,6 +1,10 @@
-//! Quadratic ring element of rectangular section for axisymmetric linear elasticity.
+//! Quadratic ring element of rectangular section: axisymmetric linear elasticity and conduction.
 
 use std::{f64::consts::PI, sync::LazyLock};
+
+mod conduction;
+
+pub use conduction::{Conduction, EdgePoint, edge_points};
 
 /// Nodes of the element.
 pub const NODES: usize = 8;

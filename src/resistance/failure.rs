@@ -30,6 +30,7 @@ pub enum Failure {
     Polygon {
         /// Index of the plate.
         plate: usize,
+    },
     /// What was handed over does not belong together.
     #[error("the columns do not fit: {what}")]
     Misfit {
