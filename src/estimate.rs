@@ -8,7 +8,7 @@ mod maps;
 mod results;
 mod surfaces;
 
-pub use chain::{Chain, State};
+pub use chain::{Chain, Meeting, State};
 pub use choice::{Choice, Fineness, Watch};
 pub use forces::Strength;
 pub use maps::{field_map, ring_tables};
@@ -19,6 +19,7 @@ pub use crate::resistance::RingRow;
 use crate::{
     diagnostic::Assumption,
     joint::{Fastener, Joint, Sink, Zone},
+    pressure,
     resistance::{self, Path},
 };
 
@@ -102,6 +103,14 @@ pub enum Failure {
     /// The plates could not be cut into networks.
     #[error("the plates cannot be cut into networks: {0}")]
     Plates(#[from] resistance::Failure),
+    /// The elastic contact has no field.
+    #[error("the elastic contact has no field: {0}")]
+    Contact(pressure::elastic::Failure),
+    /// Bolts thread into both plates from opposite sides.
+    #[error(
+        "bolts thread into both plates from opposite sides; the elastic field takes threads in one of them"
+    )]
+    ThreadsInBothPlates,
     /// No clamp force is left.
     #[error(
         "no clamp force is left in service at {bolts} of {of} bolts in case `{case}`, so the joint is open there; raise the preload, lengthen the grip or match the expansion"
@@ -184,7 +193,7 @@ fn case_result(chain: &Chain, case: usize, numerical_error: f64) -> Result<CaseR
     let named = &joint.service.cases[case];
     let state = closed(chain, case)?;
     let bolts = chain.bolts(case, &state);
-    let pressure = chain.pressure(&state);
+    let pressure = chain.pressure(case, &state)?;
     let path = &state.path;
     Ok(CaseResult {
         name: named.name,
@@ -211,15 +220,7 @@ fn case_result(chain: &Chain, case: usize, numerical_error: f64) -> Result<CaseR
 /// The nominal state of a case in which every bolt still clamps.
 fn closed(chain: &Chain, case: usize) -> Result<State, Failure> {
     let state = chain.state(case, &Realisation::default())?;
-    let forces = &state.conditions.forces;
-    let open = forces.iter().filter(|force| **force <= 0.0).count();
-    if open > 0 {
-        return Err(Failure::Open {
-            bolts: open,
-            of: forces.len(),
-            case: chain.joint().service.cases[case].name,
-        });
-    }
+    chain.refuse_open(case, &state.conditions.forces)?;
     Ok(state)
 }
 

@@ -60,7 +60,7 @@ proptest! {
         joint.fasteners[0].places = vec![[x, y], [x + pitch, y]];
         let chain = Chain::new(&joint).expect("a chain");
         let state = chain.state(0, &Realisation::default()).expect("a state");
-        let carried = chain.pressure(&state).force;
+        let carried = chain.pressure(0, &state).expect("a pressure").force;
         let clamped: f64 = state.conditions.forces.iter().sum();
         // The field is normalised by the quadrature that also reads it.
         prop_assert!((carried / clamped - 1.0).abs() < 1e-6, "{carried} N of {clamped} N");

@@ -2,6 +2,7 @@
 
 mod conditions;
 mod cone;
+mod elastic;
 mod form;
 mod geometry;
 mod levels;
@@ -12,6 +13,7 @@ use std::borrow::Cow;
 
 use conditions::Conditions;
 use cone::ConeModel;
+use elastic::ElasticModel;
 
 use crate::{
     diagnostic::Caution,
@@ -40,6 +42,8 @@ pub struct Chain<'a> {
 enum Model {
     /// Closed form and networks.
     Cone(ConeModel),
+    /// Elastic contact and conduction of the whole plates.
+    Elastic(ElasticModel),
 }
 
 /// One run through the chain.
@@ -53,7 +57,7 @@ pub struct State {
 
 /// How the faces meet at a point.
 #[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Met {
+pub struct Meeting {
     /// Contact pressure, Pa.
     pub pressure: f64,
     /// Gap beside the contact, m; none where the field knows none.
@@ -85,7 +89,9 @@ impl<'a> Chain<'a> {
             group_of,
             model: match choice {
                 Choice::Cone => Model::Cone(ConeModel::new(joint)?),
-                Choice::Elastic { .. } => todo!(),
+                Choice::Elastic { fineness, memory } => {
+                    Model::Elastic(ElasticModel::new(joint, (fineness, memory), watch)?)
+                }
             },
         };
         chain.model = chain.levelled()?;
@@ -96,6 +102,7 @@ impl<'a> Chain<'a> {
     fn levelled(&self) -> Result<Model, Failure> {
         Ok(match &self.model {
             Model::Cone(model) => Model::Cone(model.levelled(self)?),
+            Model::Elastic(model) => Model::Elastic(model.levelled(self)?),
         })
     }
 
@@ -133,6 +140,7 @@ impl<'a> Chain<'a> {
     pub fn field_name(&self) -> &'static str {
         match &self.model {
             Model::Cone(_) => "cone",
+            Model::Elastic(_) => "elastic",
         }
     }
 
@@ -140,6 +148,7 @@ impl<'a> Chain<'a> {
     pub fn resolution_name(&self) -> &'static str {
         match &self.model {
             Model::Cone(_) => Fineness::Normal.name(),
+            Model::Elastic(model) => model.fineness().name(),
         }
     }
 
@@ -152,6 +161,7 @@ impl<'a> Chain<'a> {
     pub fn cells(&self) -> Option<&Cells> {
         match &self.model {
             Model::Cone(model) => Some(model.cells()),
+            Model::Elastic(_) => None,
         }
     }
 
@@ -160,6 +170,7 @@ impl<'a> Chain<'a> {
         let conditions = self.conditions(case, at)?;
         let path = match &self.model {
             Model::Cone(model) => model.path(case, &conditions, at),
+            Model::Elastic(model) => model.path(self, case, (&conditions, at))?,
         };
         self.check(case, &path)?;
         Ok(State { conditions, path })
@@ -178,6 +189,19 @@ impl<'a> Chain<'a> {
         }
     }
 
+    /// Refuses a case in which a bolt no longer clamps.
+    pub(super) fn refuse_open(&self, case: usize, forces: &[f64]) -> Result<(), Failure> {
+        let open = forces.iter().filter(|force| **force <= 0.0).count();
+        if open > 0 {
+            return Err(Failure::Open {
+                bolts: open,
+                of: forces.len(),
+                case: self.joint().service.cases[case].name,
+            });
+        }
+        Ok(())
+    }
+
     /// Every bolt of a case, at the nominal state.
     pub fn bolts(&self, case: usize, state: &State) -> Vec<BoltResult> {
         self.joint
@@ -194,6 +218,7 @@ impl<'a> Chain<'a> {
                     largest_torque: strength.largest_torque.map(|(torque, _)| torque),
                     contact_radius: match &self.model {
                         Model::Cone(model) => model.cones()[bolt].contact_radius,
+                        Model::Elastic(model) => model.contact_radius(case, bolt),
                     },
                     contact_conductance: state.path.contact_per_bolt[bolt],
                 }
@@ -202,9 +227,10 @@ impl<'a> Chain<'a> {
     }
 
     /// The pressure field of a state.
-    pub fn pressure(&self, state: &State) -> PressureResult {
+    pub fn pressure(&self, case: usize, state: &State) -> Result<PressureResult, Failure> {
         match &self.model {
-            Model::Cone(model) => model.pressure(&state.conditions.forces),
+            Model::Cone(model) => Ok(model.pressure(&state.conditions.forces)),
+            Model::Elastic(model) => model.pressure(self, case),
         }
     }
 
@@ -212,19 +238,22 @@ impl<'a> Chain<'a> {
     pub fn knows_the_gap(&self) -> bool {
         match &self.model {
             Model::Cone(_) => false,
+            Model::Elastic(_) => true,
         }
     }
 
-    /// How the faces meet at a point in joint coordinates; none off the faying faces or in a hole.
-    pub fn met_at(&self, point: [f64; 2], state: &State) -> Option<Met> {
+    /// How the faces meet at a point in joint coordinates, first case at nominal; none off the
+    /// faying faces or in a hole.
+    pub fn met_at(&self, point: [f64; 2], state: &State) -> Option<Meeting> {
         match &self.model {
             Model::Cone(model) => {
                 let pressure = model.cells().pressure_at(point, &state.conditions.forces)?;
-                Some(Met {
+                Some(Meeting {
                     pressure,
                     gap: None,
                 })
             }
+            Model::Elastic(model) => model.met_at(0, point),
         }
     }
 
@@ -232,6 +261,7 @@ impl<'a> Chain<'a> {
     pub fn rings(&self, bolt: usize, state: &State) -> Vec<RingRow> {
         match &self.model {
             Model::Cone(model) => model.cells().rings(&state.conditions.load(), bolt),
+            Model::Elastic(model) => model.rings(0, bolt),
         }
     }
 
@@ -239,6 +269,7 @@ impl<'a> Chain<'a> {
     pub fn footprint(&self) -> f64 {
         match &self.model {
             Model::Cone(model) => model.cells().interface_area,
+            Model::Elastic(model) => model.footprint(),
         }
     }
 
@@ -266,6 +297,7 @@ impl<'a> Chain<'a> {
     pub(super) fn field_cautions(&self) -> Vec<Caution> {
         match &self.model {
             Model::Cone(model) => model.cautions(),
+            Model::Elastic(_) => Vec::new(),
         }
     }
 
@@ -273,6 +305,7 @@ impl<'a> Chain<'a> {
     pub fn cones(&self) -> &[Cone] {
         match &self.model {
             Model::Cone(model) => model.cones(),
+            Model::Elastic(_) => &[],
         }
     }
 
@@ -281,6 +314,7 @@ impl<'a> Chain<'a> {
     pub fn discretisation_error(&self, state: &State) -> Result<f64, Failure> {
         match &self.model {
             Model::Cone(model) => model.discretisation_error(self, state),
+            Model::Elastic(model) => model.discretisation_error(self),
         }
     }
 
@@ -289,6 +323,7 @@ impl<'a> Chain<'a> {
     pub(in crate::estimate) fn gas_share(&self) -> Result<f64, Failure> {
         match &self.model {
             Model::Cone(model) => model.gas_share(self),
+            Model::Elastic(model) => model.gas_share(self),
         }
     }
 }

@@ -8,7 +8,7 @@ use crate::{
 /// Pressure, gap and local conductance over the window of both plates, `columns` points wide.
 pub fn field_map(chain: &Chain, columns: usize) -> Result<FieldMap, Failure> {
     let state = chain.state(0, &Realisation::default())?;
-    let peak = chain.pressure(&state).peak;
+    let peak = chain.pressure(0, &state)?.peak;
     let faces = state.conditions.faces.over_many_points(peak);
     let window = window(chain.joint());
     let [left, lower, right, upper] = window;

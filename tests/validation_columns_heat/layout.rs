@@ -88,9 +88,9 @@ impl Case {
         let mut all: Vec<([f64; 2], usize)> = Vec::new();
         for (index, [x, y]) in self.model.bolts.iter().enumerate() {
             for at in [[*x, *y], [-x, *y], [*x, -y], [-x, -y]] {
-                let known = all.iter().any(|(other, _)| {
-                    (other[0] - at[0]).hypot(other[1] - at[1]) < 1e-9
-                });
+                let known = all
+                    .iter()
+                    .any(|(other, _)| (other[0] - at[0]).hypot(other[1] - at[1]) < 1e-9);
                 if !known {
                     all.push((at, index));
                 }
@@ -105,12 +105,21 @@ impl Case {
         let spacing = grid.fine * (self.model.rw - self.model.rh) * mm;
         let axis = |half: f64, axis: usize| {
             let mut stops = vec![
-                Stop { at: -half * mm, rank: 0 },
-                Stop { at: half * mm, rank: 0 },
+                Stop {
+                    at: -half * mm,
+                    rank: 0,
+                },
+                Stop {
+                    at: half * mm,
+                    rank: 0,
+                },
             ];
             let mut fine = Vec::new();
             for (at, _) in self.bolts() {
-                stops.push(Stop { at: at[axis] * mm, rank: 1 });
+                stops.push(Stop {
+                    at: at[axis] * mm,
+                    rank: 1,
+                });
                 fine.push(Fine {
                     at: at[axis] * mm,
                     reach: (self.model.rw + 2.5) * mm,
@@ -278,11 +287,17 @@ fn worst(case: &Case, grid: &Grid) -> Worst {
         let given = (&terminals, &conductivity[..]);
         let (mut conduction, first, perfect) =
             solve_both(&stack, given, &[vec![solid.clone()]]).expect("it is solved");
-        let second = conduction.solve(&[vec![both.clone()]]).expect("it is solved");
+        let second = conduction
+            .solve(&[vec![both.clone()]])
+            .expect("it is solved");
         let known = |medium: &str| {
             let known = &case.heat[&format!("{medium}/{sink}")];
             // An edge is held at the reference temperature; the other sinks are the back.
-            let sink = if sink == "edge_x" { 0.0 } else { known.T_back_mean };
+            let sink = if sink == "edge_x" {
+                0.0
+            } else {
+                known.T_back_mean
+            };
             [known.T_source_mean - sink, known.T_hot - sink].map(|rise| rise / known.Q_W)
         };
         for (medium, heat) in [("vacuum", first), ("air", second)] {

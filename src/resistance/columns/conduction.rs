@@ -5,7 +5,7 @@ use std::sync::Arc;
 use crate::resistance::{
     Failure,
     columns::{
-        Conductivity, Heat, Health, Stack, Terminals,
+        Conductivity, Health, Heat, Stack, Terminals,
         equations::{Arrangement, Equations},
         readings::{Reader, blocked},
         terminals::Ends,

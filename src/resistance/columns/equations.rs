@@ -90,9 +90,8 @@ impl Equations {
             Arrangement::Merged => Vec::new(),
             Arrangement::Apart => add_faces(stack, &places, &threads, &mut operator),
         };
-        let stiffness = |body: usize| {
-            HELD * conductivity[body].through / stack.bodies[body].thickness()
-        };
+        let stiffness =
+            |body: usize| HELD * conductivity[body].through / stack.bodies[body].thickness();
         let last = stack.bodies.len() - 1;
         let unknown = |operator: &Operator<Scalar>, body: usize, node: usize| {
             operator.unknown(places[body][0], 0, places[body][1] + node)
@@ -165,8 +164,7 @@ impl Equations {
         for (place, weight) in &heated {
             load[*place] += weight * gripped.unwrap_or(1.0);
         }
-        let multigrid = Multigrid::new(&operator, Coarsening::FULL)
-            .map_err(|_| stopped(0, 1.0))?;
+        let multigrid = Multigrid::new(&operator, Coarsening::FULL).map_err(|_| stopped(0, 1.0))?;
         Ok(Self {
             rise: operator.zeros(),
             operator,
@@ -196,7 +194,10 @@ impl Equations {
             for (index, (part, tie)) in parts.iter().zip(ties).enumerate() {
                 let guided: Vec<f64> = if index == 0 {
                     let extra = self.beside.iter().zip(&self.threads);
-                    part.iter().zip(extra).map(|(g, (b, t))| g + b + t).collect()
+                    part.iter()
+                        .zip(extra)
+                        .map(|(g, (b, t))| g + b + t)
+                        .collect()
                 } else {
                     part.clone()
                 };
@@ -280,13 +281,19 @@ impl Equations {
 
     /// Heat that leaves, W.
     fn drained(&self) -> f64 {
-        let flows = self.drains.iter().map(|(place, pull)| pull * self.rise[*place]);
+        let flows = self
+            .drains
+            .iter()
+            .map(|(place, pull)| pull * self.rise[*place]);
         flows.sum()
     }
 
     /// Mean over the heated zones, weighted with their heat.
     pub(super) fn source_mean(&self) -> f64 {
-        let parts = self.heated.iter().map(|(place, weight)| weight * self.rise[*place]);
+        let parts = self
+            .heated
+            .iter()
+            .map(|(place, weight)| weight * self.rise[*place]);
         parts.sum()
     }
 

@@ -5,7 +5,7 @@ use std::sync::Arc;
 use crate::{
     numerics::columns::Plan,
     resistance::columns::{
-        Conductivity, Heat, Health, Hottest, Seat, Sink, Stack, Terminals, equations::Equations,
+        Conductivity, Health, Heat, Hottest, Seat, Sink, Stack, Terminals, equations::Equations,
         terminals::Ends,
     },
 };
@@ -25,11 +25,7 @@ pub(super) struct Reader<'a> {
 }
 
 /// Whether some interface conducts nothing and no bolt goes past it.
-pub(super) fn blocked(
-    terminals: &Terminals,
-    ends: &Ends,
-    conductances: &[Vec<Vec<f64>>],
-) -> bool {
+pub(super) fn blocked(terminals: &Terminals, ends: &Ends, conductances: &[Vec<Vec<f64>>]) -> bool {
     let past = terminals
         .bolts
         .iter()
@@ -76,7 +72,11 @@ impl Reader<'_> {
                 }))
             })
             .collect();
-        (series(per_interface.iter().copied()), per_bolt, per_interface)
+        (
+            series(per_interface.iter().copied()),
+            per_bolt,
+            per_interface,
+        )
     }
 
     /// Isothermal planes at the faces that heat must cross can only help it.
@@ -85,7 +85,12 @@ impl Reader<'_> {
     fn one_dimensional(&self, contact: f64) -> f64 {
         let bodies = &self.stack.bodies;
         let last = bodies.len() - 1;
-        let bolts = || self.terminals.bolts.iter().filter(|bolt| bolt.strength > 0.0);
+        let bolts = || {
+            self.terminals
+                .bolts
+                .iter()
+                .filter(|bolt| bolt.strength > 0.0)
+        };
         let threaded = bolts().any(|bolt| matches!(bolt.seat, Seat::Thread { .. }));
         let mut sum = contact.recip();
         for (index, (body, conductivity)) in bodies.iter().zip(self.conductivity).enumerate() {
@@ -93,7 +98,10 @@ impl Reader<'_> {
             let entry = if index == 0 {
                 sources.map(|patch| patch.node).min()
             } else {
-                self.stack.faces[index - 1].iter().map(|part| part.lower).min()
+                self.stack.faces[index - 1]
+                    .iter()
+                    .map(|part| part.lower)
+                    .min()
             };
             let exit = if index < last {
                 self.stack.faces[index].iter().map(|part| part.upper).max()
@@ -162,9 +170,7 @@ impl Reader<'_> {
                 let values = patches.iter().flat_map(|patch| {
                     let weights = patch.covered.weights.iter().enumerate();
                     let own = &temperatures[0];
-                    weights.map(move |(column, weight)| {
-                        (own[column * nodes + patch.node], *weight)
-                    })
+                    weights.map(move |(column, weight)| (own[column * nodes + patch.node], *weight))
                 });
                 mean(values) - sink_mean
             })

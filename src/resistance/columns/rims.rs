@@ -93,10 +93,7 @@ fn round((centre, radius): ([f64; 2], f64), plan: &Plan, covered: &mut Covered) 
             };
             let [x, y] = plan.cell_sides(cell);
             let sides = [x[1] - x[0], y[1] - y[0]];
-            let values = corner_values(
-                (point[0] - x[0]) / sides[0],
-                (point[1] - y[0]) / sides[1],
-            );
+            let values = corner_values((point[0] - x[0]) / sides[0], (point[1] - y[0]) / sides[1]);
             let corners = plan.corners(cell);
             let length = radius * weight;
             let before = corners.map(|column| covered.weights[column]);

@@ -4,10 +4,7 @@ use crate::{
     numerics::columns::Plan,
     resistance::{
         Failure,
-        columns::{
-            Side, Stack, Zone,
-            zone::Covered,
-        },
+        columns::{Side, Stack, Zone, zone::Covered},
     },
 };
 
@@ -161,9 +158,9 @@ impl Ends {
         };
         let area = |patches: &[Patch]| patches.iter().map(|p| p.covered.area()).sum::<f64>();
         let whole: f64 = source.iter().map(|(_, share)| share).sum();
-        let sound = source.iter().all(|(patches, share)| {
-            area(patches) > 0.0 && share.is_finite() && *share >= 0.0
-        });
+        let sound = source
+            .iter()
+            .all(|(patches, share)| area(patches) > 0.0 && share.is_finite() && *share >= 0.0);
         if !(sound && whole > 0.0) {
             return Err(Failure::Misfit {
                 what: "every heated zone must cover solid and take a share of the heat",
@@ -236,10 +233,7 @@ fn sinks(stack: &Stack, sinks: &[Sink]) -> Result<Vec<(Patch, Grip)>, Failure> {
                         what: "a film needs a coefficient above zero",
                     });
                 }
-                (
-                    patches(&stack.plan, zone, &backs),
-                    Grip::Film(*coefficient),
-                )
+                (patches(&stack.plan, zone, &backs), Grip::Film(*coefficient))
             }
             Sink::Held(zone) => (patches(&stack.plan, zone, &backs), Grip::Held),
             Sink::Rim(rim) => {
@@ -282,7 +276,11 @@ fn bolt_ends(
         };
         let inner = disc(annulus[0]);
         let outer = disc(annulus[1]);
-        outer.iter().zip(inner).map(|(o, i)| (o - i).max(0.0)).collect()
+        outer
+            .iter()
+            .zip(inner)
+            .map(|(o, i)| (o - i).max(0.0))
+            .collect()
     };
     let level = |body: usize, annulus: [f64; 2], levels: &[(usize, Vec<f64>)]| {
         let mut entries = Vec::new();
@@ -295,9 +293,7 @@ fn bolt_ends(
     };
     let head = level(0, bolt.head, tops);
     let seat = match bolt.seat {
-        Seat::Nut { annulus } => {
-            level(last, annulus, &stack.bodies[last].open_faces(Side::Down))
-        }
+        Seat::Nut { annulus } => level(last, annulus, &stack.bodies[last].open_faces(Side::Down)),
         Seat::Thread { annulus, depth } => {
             let body = &stack.bodies[last];
             let top = body.thickness();

@@ -117,12 +117,7 @@ impl Zone {
 
 /// The four functions of a cell: corners (0, 0), (0, 1), (1, 0), (1, 1).
 pub(super) fn corner_values(s: f64, t: f64) -> [f64; 4] {
-    [
-        (1.0 - s) * (1.0 - t),
-        (1.0 - s) * t,
-        s * (1.0 - t),
-        s * t,
-    ]
+    [(1.0 - s) * (1.0 - t), (1.0 - s) * t, s * (1.0 - t), s * t]
 }
 
 /// Adds a point of a cell with its weight to all integrals.
@@ -214,7 +209,9 @@ mod tests {
     #[test]
     fn a_whole_face_has_the_mass_of_the_columns() {
         let plan = plan();
-        let shares: Vec<f64> = (0..plan.cells()).map(|cell| (cell % 3) as f64 / 2.0).collect();
+        let shares: Vec<f64> = (0..plan.cells())
+            .map(|cell| (cell % 3) as f64 / 2.0)
+            .collect();
         let covered = Zone::Face.covered(&plan, &shares);
         for (row, other) in covered.stencil.iter().zip(mass(&plan, &shares)) {
             for (entry, other) in row.iter().zip(other) {

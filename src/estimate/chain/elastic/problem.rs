@@ -2,9 +2,7 @@
 
 use crate::{
     estimate::{Failure, Watch, chain::elastic::variant::Variant},
-    joint::{
-        self, Compliance, Engagement, FaceFriction, Fastener, HeadModel, Joint, Plate, Zone,
-    },
+    joint::{self, Compliance, Engagement, FaceFriction, Fastener, HeadModel, Joint, Plate, Zone},
     pressure::elastic::{
         self, Annulus, Body, Bolt, Cover, End, Faces, Fineness, Head, Height, Interface, Layer,
         Problem, Progress, Stage,
@@ -86,9 +84,7 @@ pub(super) fn with_problem<T>(
         .zip(&covers)
         .map(|(plate, storeys)| body(plate, storeys))
         .collect();
-    let gap: Box<Height> = Box::new(|point| {
-        task.variant.initial_gap(joint, point)
-    });
+    let gap: Box<Height> = Box::new(|point| task.variant.initial_gap(joint, point));
     let interfaces = (1..plates.len())
         .map(|_| Interface {
             gap: gap.as_ref(),
@@ -159,9 +155,10 @@ fn ribs(plate: &Plate) -> Vec<Storey<'_>> {
             Storey {
                 cover: Box::new(move |point| {
                     plate.covers(point)
-                        && plate.ribs.iter().any(|rib| {
-                            rib.height >= height && rib.patch.contains(plate.own(point))
-                        })
+                        && plate
+                            .ribs
+                            .iter()
+                            .any(|rib| rib.height >= height && rib.patch.contains(plate.own(point)))
                 }),
                 thickness,
                 main: false,

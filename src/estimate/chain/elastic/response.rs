@@ -128,9 +128,8 @@ impl Response {
         let perfect_contact = nominal.perfect_contact * perfect.exp();
         let added_by_joint = nominal.added_by_joint * added.exp();
         let source_to_sink = perfect_contact + added_by_joint;
-        let share = |value: f64, moved: f64| {
-            (value / nominal.source_to_sink + moved) * source_to_sink
-        };
+        let share =
+            |value: f64, moved: f64| (value / nominal.source_to_sink + moved) * source_to_sink;
         Path {
             contact: nominal.contact * contact.exp(),
             perfect_contact,

@@ -57,9 +57,10 @@ impl Variant {
         match self {
             Self::Flat => 0.0,
             Self::Bent(place) => {
-                let bent = joint.plates.iter().map(|plate| {
-                    plate.flatness_gap(point, place * loose_flatness(plate))
-                });
+                let bent = joint
+                    .plates
+                    .iter()
+                    .map(|plate| plate.flatness_gap(point, place * loose_flatness(plate)));
                 joint.initial_gap(point) + bent.sum::<f64>()
             }
             _ => joint.initial_gap(point),

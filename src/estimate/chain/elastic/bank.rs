@@ -1,0 +1,184 @@
+//! Fields solved so far, so that no field is solved twice.
+
+use std::sync::{Arc, Mutex, OnceLock};
+
+use crate::{
+    estimate::{
+        Failure, Watch,
+        chain::elastic::{
+            heat::Plates,
+            problem::{Order, Task, with_problem},
+            variant::Variant,
+        },
+    },
+    joint::Joint,
+    pressure::elastic::{self, Field, Fineness},
+};
+
+/// Relative difference of two force patterns below which one is the other times a factor.
+const SAME_PATTERN: f64 = 1e-9;
+/// Levels from coarse to fine.
+const LEVELS: [Fineness; 4] = [
+    Fineness::Coarse,
+    Fineness::Fast,
+    Fineness::Normal,
+    Fineness::Fine,
+];
+
+/// The fields of one joint, for any torque and medium.
+#[derive(Debug)]
+pub(super) struct Bank {
+    pub(super) order: Order,
+    pub(super) watch: Watch,
+    most_bytes: u64,
+    asperities: OnceLock<f64>,
+    solved: Mutex<Vec<Solved>>,
+    plates: [OnceLock<Arc<Plates>>; 4],
+}
+
+#[derive(Clone, Debug)]
+struct Solved {
+    fineness: Fineness,
+    variant: Variant,
+    forces: Vec<f64>,
+    field: Arc<Field>,
+}
+
+impl Bank {
+    /// An empty bank that may take so many bytes for one field.
+    pub(super) fn new(joint: &Joint, most_bytes: u64, watch: &Watch) -> Result<Self, Failure> {
+        Ok(Self {
+            order: Order::of(joint)?,
+            watch: watch.clone(),
+            most_bytes,
+            asperities: OnceLock::new(),
+            solved: Mutex::new(Vec::new()),
+            plates: [const { OnceLock::new() }; 4],
+        })
+    }
+
+    /// Takes what the asperities yield, Pa/m; the first word counts, so that all fields share it.
+    pub(super) fn take_asperities(&self, stiffness: f64) {
+        self.asperities.get_or_init(|| stiffness);
+    }
+
+    /// The field under forces, N: one that is known, one that is known times a factor, or a new one.
+    ///
+    /// The contact of flat faces does not depend on the force, so a factor is exact there.
+    pub(super) fn field(
+        &self,
+        joint: &Joint,
+        (fineness, variant): (Fineness, Variant),
+        forces: &[f64],
+    ) -> Result<Arc<Field>, Failure> {
+        let known: Vec<Solved> = self.solved.lock().map_or_else(
+            |_| Vec::new(),
+            |solved| {
+                solved
+                    .iter()
+                    .filter(|each| each.fineness == fineness && each.variant == variant)
+                    .cloned()
+                    .collect()
+            },
+        );
+        for each in &known {
+            match factor(&each.forces, forces) {
+                Some(factor) if (factor - 1.0).abs() <= SAME_PATTERN => {
+                    return Ok(each.field.clone());
+                }
+                Some(factor) if variant.is_flat(joint) => {
+                    return Ok(Arc::new(each.field.scaled(factor)));
+                }
+                _ => {}
+            }
+        }
+        let task = Task {
+            variant,
+            fineness,
+            forces,
+            asperities: self.asperities.get().copied().unwrap_or(f64::NAN),
+            most_bytes: self.most_bytes,
+            watch: &self.watch,
+        };
+        let near = nearest(&known, forces);
+        let field = with_problem(joint, self.order, &task, |problem| match near {
+            Some(near) => elastic::solve_from(problem, &near.field),
+            None => elastic::solve(problem),
+        });
+        let field = Arc::new(field.map_err(Failure::Contact)?);
+        if let Ok(mut solved) = self.solved.lock() {
+            solved.push(Solved {
+                fineness,
+                variant,
+                forces: forces.to_vec(),
+                field: field.clone(),
+            });
+        }
+        Ok(field)
+    }
+
+    /// The plates as heat meets them on the grid of a field.
+    pub(super) fn plates(
+        &self,
+        joint: &Joint,
+        fineness: Fineness,
+        field: &Field,
+    ) -> Result<Arc<Plates>, Failure> {
+        let slot = &self.plates[level(fineness)];
+        if let Some(plates) = slot.get() {
+            return Ok(plates.clone());
+        }
+        let made = Arc::new(Plates::new(joint, self.order, &field.mesh).map_err(Failure::Plates)?);
+        Ok(slot.get_or_init(|| made).clone())
+    }
+}
+
+fn level(fineness: Fineness) -> usize {
+    LEVELS
+        .iter()
+        .position(|level| *level == fineness)
+        .unwrap_or(0)
+}
+
+/// The level whose difference tells the error of a level.
+pub(super) fn coarser(fineness: Fineness) -> Fineness {
+    LEVELS[level(fineness).saturating_sub(1)]
+}
+
+/// The factor that makes one set of forces the other; none where they differ in pattern.
+fn factor(from: &[f64], to: &[f64]) -> Option<f64> {
+    let factor = to.iter().sum::<f64>() / from.iter().sum::<f64>();
+    let same = from
+        .iter()
+        .zip(to)
+        .all(|(from, to)| (from * factor - to).abs() <= SAME_PATTERN * to.abs());
+    (same && factor.is_finite() && factor > 0.0).then_some(factor)
+}
+
+/// The known field whose force as a whole is nearest.
+fn nearest<'a>(known: &'a [Solved], forces: &[f64]) -> Option<&'a Solved> {
+    let whole: f64 = forces.iter().sum();
+    let off = |each: &Solved| (each.forces.iter().sum::<f64>() / whole).ln().abs();
+    known
+        .iter()
+        .min_by(|one, other| off(one).total_cmp(&off(other)))
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn forces_of_one_pattern_differ_by_a_factor() {
+        let off = factor(&[1.0, 2.0], &[3.0, 6.0]).map(|factor| (factor - 3.0).abs());
+        assert!(off.is_some_and(|off| off < 1e-12), "{off:?}");
+        assert_eq!(factor(&[1.0, 2.0], &[3.0, 5.0]), None);
+        assert_eq!(factor(&[1.0], &[0.0]), None);
+    }
+
+    #[test]
+    fn the_error_of_a_level_is_told_by_the_one_below() {
+        assert_eq!(coarser(Fineness::Fine), Fineness::Normal);
+        assert_eq!(coarser(Fineness::Fast), Fineness::Coarse);
+    }
+}

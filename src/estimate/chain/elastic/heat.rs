@@ -1,0 +1,331 @@
+//! Heat through the plates on the grid of the contact.
+
+use std::sync::{Arc, Mutex};
+
+use crate::{
+    estimate::chain::{conditions::Conditions, elastic::problem::Order},
+    joint::{Engagement, Joint, Outline, Sink},
+    pressure::elastic::{Field, Mesh},
+    resistance::{
+        self, Path,
+        columns::{
+            self, Body, Bolt, Conduction, Conductivity, Edge, Heat, Meeting, Perfect, Rim, Seat,
+            Slab, Source, Stack, Terminals, Zone,
+        },
+    },
+};
+
+/// Wall beside a thread that takes its heat, in hole radii (judgement: it stands for the threads,
+/// and the resistance of the bolt hardly feels it).
+const WALL: f64 = 1.25;
+
+/// The plates as heat meets them.
+#[derive(Debug)]
+pub(super) struct Plates {
+    stack: Arc<Stack>,
+    source: Source,
+    sinks: Vec<columns::Sink>,
+    /// Bolts without conductance: places and seats.
+    bolts: Vec<Bolt>,
+    /// The last equations, for loads that differ only in the faces.
+    last: Mutex<Option<Kept>>,
+    /// Perfect contact met so far.
+    perfect: Mutex<Vec<Perfect>>,
+}
+
+/// Equations and the shanks they hold.
+struct Kept {
+    conduction: Conduction,
+    shanks: Vec<f64>,
+}
+
+impl std::fmt::Debug for Kept {
+    fn fmt(&self, out: &mut std::fmt::Formatter<'_>) -> std::fmt::Result {
+        out.debug_struct("Kept").finish_non_exhaustive()
+    }
+}
+
+/// What a departure does to the faces and plates, as factors.
+#[derive(Clone, Copy, Debug)]
+pub(super) struct Factors {
+    pub(super) touching: f64,
+    pub(super) parted: f64,
+    pub(super) conductivity: [f64; 2],
+}
+
+impl Factors {
+    pub(super) const NONE: Self = Self {
+        touching: 1.0,
+        parted: 1.0,
+        conductivity: [1.0; 2],
+    };
+}
+
+/// Local conductance of every column of every part of every interface, W/(m² K).
+pub(super) type Conductances = Vec<Vec<Vec<f64>>>;
+
+impl Plates {
+    pub(super) fn new(
+        joint: &Joint,
+        order: Order,
+        mesh: &Mesh,
+    ) -> Result<Self, resistance::Failure> {
+        let mut bodies: Vec<Body> = mesh.bodies.iter().map(body).collect();
+        let mut faces: Vec<Vec<Meeting>> = (0..mesh.faces.len())
+            .map(|face| meeting(mesh, face))
+            .collect();
+        if order == Order::Reversed {
+            let nodes: Vec<usize> = bodies.iter().map(Body::nodes).collect();
+            for (face, parts) in faces.iter_mut().enumerate() {
+                for part in parts {
+                    // Upside down the lower body lies on top, and nodes count from the other face.
+                    (part.upper, part.lower) = (
+                        nodes[face + 1] - 1 - part.lower,
+                        nodes[face] - 1 - part.upper,
+                    );
+                }
+            }
+            faces.reverse();
+            bodies.reverse();
+            for body in &mut bodies {
+                body.layers.reverse();
+            }
+        }
+        let mut stack = Stack::new(mesh.plan.clone(), bodies)?;
+        for (interface, parts) in faces.into_iter().enumerate() {
+            stack = stack.meeting(interface, parts)?;
+        }
+        Ok(Self {
+            stack: Arc::new(stack),
+            source: source(joint),
+            sinks: sinks(joint),
+            bolts: bolts(joint),
+            last: Mutex::new(None),
+            perfect: Mutex::new(Vec::new()),
+        })
+    }
+
+    /// Heat and path under conductances of the faces.
+    pub(super) fn solve(
+        &self,
+        conductances: &Conductances,
+        conductivity: [f64; 2],
+        shanks: &[f64],
+    ) -> Result<(Heat, Path), resistance::Failure> {
+        let conductivity = conductivity.map(Conductivity::isotropic);
+        let terminals = self.terminals(shanks);
+        let kept = self
+            .last
+            .lock()
+            .ok()
+            .and_then(|mut kept| kept.take())
+            .filter(|kept| kept.shanks == shanks && kept.conduction.conductivity() == conductivity);
+        let mut kept = match kept {
+            Some(kept) => kept,
+            None => Kept {
+                conduction: Conduction::new(&self.stack, &terminals, &conductivity)?,
+                shanks: shanks.to_vec(),
+            },
+        };
+        let (heat, perfect) = rayon::join(
+            || kept.conduction.solve(conductances),
+            || self.perfect(&terminals, &conductivity),
+        );
+        if let Ok(mut last) = self.last.lock() {
+            *last = Some(kept);
+        }
+        let (heat, perfect) = (heat?, perfect?);
+        let path = heat.path(&perfect);
+        path.checked("heat through the columns")?;
+        Ok((heat, path))
+    }
+
+    fn perfect(
+        &self,
+        terminals: &Terminals,
+        conductivity: &[Conductivity],
+    ) -> Result<Perfect, resistance::Failure> {
+        let known = self.perfect.lock().ok().and_then(|known| {
+            known
+                .iter()
+                .find(|perfect| perfect.serves(terminals, conductivity))
+                .cloned()
+        });
+        if let Some(perfect) = known {
+            return Ok(perfect);
+        }
+        let perfect = Perfect::new(&self.stack, terminals, conductivity)?;
+        if let Ok(mut known) = self.perfect.lock() {
+            known.push(perfect.clone());
+        }
+        Ok(perfect)
+    }
+
+    fn terminals(&self, shanks: &[f64]) -> Terminals {
+        Terminals {
+            source: self.source.clone(),
+            sinks: self.sinks.clone(),
+            bolts: self
+                .bolts
+                .iter()
+                .zip(shanks)
+                .map(|(bolt, strength)| Bolt {
+                    strength: *strength,
+                    ..*bolt
+                })
+                .collect(),
+        }
+    }
+}
+
+/// What the laws of the faces make of a field.
+pub(super) fn conductances(
+    field: &Field,
+    order: Order,
+    (conditions, factors): (&Conditions, &Factors),
+) -> Conductances {
+    let highest = field
+        .faces
+        .iter()
+        .flat_map(|face| face.pressure.iter().copied())
+        .fold(0.0, f64::max);
+    let touching = conditions.faces.over_many_points(highest);
+    let local = &conditions.faces.local;
+    let parted = |gap: f64| factors.parted * local.parted(gap);
+    let mut found: Conductances = field
+        .faces
+        .iter()
+        .map(|face| {
+            let columns = face.pressure.iter().zip(&face.gap).zip(&face.weight);
+            let own = columns
+                .map(|((pressure, gap), weight)| {
+                    if *weight <= 0.0 {
+                        0.0
+                    } else if *pressure > 0.0 {
+                        factors.touching * touching(*pressure)
+                    } else {
+                        parted(*gap)
+                    }
+                })
+                .collect();
+            let beside = face.open_gap.iter().zip(&face.open_weight);
+            let beside: Vec<f64> = beside
+                .map(|(gap, weight)| if *weight > 0.0 { parted(*gap) } else { 0.0 })
+                .collect();
+            if face.open_weight.iter().any(|weight| *weight > 0.0) {
+                vec![own, beside]
+            } else {
+                vec![own]
+            }
+        })
+        .collect();
+    if order == Order::Reversed {
+        found.reverse();
+    }
+    found
+}
+
+/// A body of the contact's mesh with its layers from below.
+fn body(body: &crate::pressure::elastic::MeshBody) -> Body {
+    Body {
+        layers: body
+            .layers
+            .iter()
+            .rev()
+            .map(|layer| Slab {
+                shares: layer.shares.clone(),
+                heights: layer.heights.clone(),
+                degree: layer.degree,
+            })
+            .collect(),
+    }
+}
+
+/// Where two bodies touch, and where they face each other beside feet.
+fn meeting(mesh: &Mesh, interface: usize) -> Vec<Meeting> {
+    let face = &mesh.faces[interface];
+    let [upper, lower] = [&mesh.bodies[interface], &mesh.bodies[interface + 1]];
+    let mut parts = vec![Meeting {
+        upper: 0,
+        lower: lower.nodes - 1,
+        weights: face.weight.clone(),
+    }];
+    if face.open_weight.iter().any(|weight| *weight > 0.0) {
+        parts.push(Meeting {
+            upper: upper.main_layer().first_node,
+            lower: lower.main_layer().last_node(),
+            weights: face.open_weight.clone(),
+        });
+    }
+    parts
+}
+
+fn source(joint: &Joint) -> Source {
+    let zone = Zone::from(joint.source.zone);
+    if joint.source.isothermal {
+        Source::Isothermal(vec![zone])
+    } else {
+        Source::Flux(vec![(zone, 1.0)])
+    }
+}
+
+fn sinks(joint: &Joint) -> Vec<columns::Sink> {
+    match joint.sink {
+        Sink::IsothermalBack => vec![columns::Sink::Held(Zone::Face)],
+        Sink::Film(coefficient) => vec![columns::Sink::Film {
+            zone: Zone::Face,
+            coefficient,
+        }],
+        Sink::Rim => match &joint.cold().outline {
+            Outline::Disc { radius } => vec![columns::Sink::Rim(Rim::Round {
+                centre: joint.cold().origin,
+                radius: *radius,
+            })],
+            // Of a polygon the outermost cells in every row of the grid.
+            Outline::Rectangle { .. } | Outline::Polygon { .. } => {
+                [Edge::West, Edge::East, Edge::South, Edge::North]
+                    .map(|edge| columns::Sink::Rim(Rim::Straight(edge)))
+                    .to_vec()
+            }
+        },
+    }
+}
+
+/// Heads and seats of the bolts on the outer faces, warm side first.
+fn bolts(joint: &Joint) -> Vec<Bolt> {
+    joint
+        .bolts()
+        .map(|(fastener, at)| {
+            let head = ring(fastener.head_seat);
+            let nut = fastener.nut_seat.map_or(head, ring);
+            let below = usize::from(fastener.head_plate == 0);
+            let wall = fastener.hole_radius[below].max(0.5 * fastener.thread.diameter);
+            let wall = [0.0, WALL * wall];
+            let (above, seat) = match (fastener.engagement, below) {
+                (Engagement::Nut, 1) => (head, Seat::Nut { annulus: nut }),
+                (Engagement::Nut, _) => (nut, Seat::Nut { annulus: head }),
+                (Engagement::Tapped { length } | Engagement::Insert { length }, 1) => {
+                    let seat = Seat::Thread {
+                        annulus: wall,
+                        depth: length,
+                    };
+                    (head, seat)
+                }
+                // The thread is in the warm plate: it takes its heat from around the hole.
+                (Engagement::Tapped { .. } | Engagement::Insert { .. }, _) => {
+                    (wall, Seat::Nut { annulus: head })
+                }
+            };
+            Bolt {
+                at,
+                head: above,
+                seat,
+                strength: 0.0,
+            }
+        })
+        .collect()
+}
+
+fn ring(seat: crate::joint::Seat) -> [f64; 2] {
+    [seat.inner_radius, seat.outer_radius]
+}
