@@ -3,10 +3,10 @@
 use crate::{
     estimate::{Estimate, FieldMap, RingRow},
     figures::{
-        CumulativePlot, Curve, Drawing, PlanBolt, PlanMap, PlanOutline, PlanPair, PlanShape,
-        RadiusMark,
+        CumulativePlot, Curve, DetailKind, Drawing, PlanBolt, PlanDetail, PlanMap, PlanOutline,
+        PlanPair, PlanShape, RadiusMark,
     },
-    joint::{Joint, Outline, Plate, Zone},
+    joint::{Joint, Outline, Patch, Plate, Zone},
 };
 
 const PRESSURE: &str = "pressure";
@@ -28,6 +28,7 @@ pub fn of_joint(
         outlines: joint.plates.iter().map(outline).collect(),
         bolts: bolts(joint, nominal, field),
         heated: heated(joint.source.zone),
+        details: joint.plates.iter().flat_map(details).collect(),
         ..map
     };
     let pressure = match PlanPair::of(&joint.title, field) {
@@ -65,17 +66,49 @@ fn outline(plate: &Plate) -> PlanOutline {
                 centre: plate.origin,
                 radius: *radius,
             },
-            Outline::Polygon { points } => {
-                let [x, y] = plate.origin;
-                PlanShape::Polygon(
-                    points
-                        .iter()
-                        .map(|point| [x + point[0], y + point[1]])
-                        .collect(),
-                )
-            }
+            Outline::Polygon { points } => PlanShape::Polygon(moved(points, plate.origin)),
         },
     }
+}
+
+/// Cut-outs, feet and ribs of a plate.
+fn details(plate: &Plate) -> Vec<PlanDetail> {
+    let detail = |kind: DetailKind, patch: &Patch| PlanDetail {
+        kind,
+        shape: shape(patch, plate.origin),
+    };
+    let cutouts = plate
+        .cutouts
+        .iter()
+        .map(|cutout| detail(DetailKind::CutOut, cutout));
+    let feet = plate.feet.iter().flat_map(|feet| &feet.at);
+    let feet = feet.map(|foot| detail(DetailKind::Foot, foot));
+    let ribs = plate
+        .ribs
+        .iter()
+        .map(|rib| detail(DetailKind::Rib, &rib.patch));
+    cutouts.chain(feet).chain(ribs).collect()
+}
+
+fn shape(patch: &Patch, [x, y]: [f64; 2]) -> PlanShape {
+    match patch {
+        Patch::Rectangle { centre, size } => PlanShape::Rectangle {
+            corner: [x + centre[0] - size[0] / 2.0, y + centre[1] - size[1] / 2.0],
+            size: *size,
+        },
+        Patch::Disc { centre, radius } => PlanShape::Disc {
+            centre: [x + centre[0], y + centre[1]],
+            radius: *radius,
+        },
+        Patch::Polygon { points } => PlanShape::Polygon(moved(points, [x, y])),
+    }
+}
+
+fn moved(points: &[[f64; 2]], [x, y]: [f64; 2]) -> Vec<[f64; 2]> {
+    points
+        .iter()
+        .map(|point| [x + point[0], y + point[1]])
+        .collect()
 }
 
 fn heated(zone: Zone) -> Option<PlanShape> {
