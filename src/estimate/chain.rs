@@ -110,22 +110,18 @@ impl<'a> Chain<'a> {
     ///
     /// Groups whose preload is stated keep it.
     pub fn with_torque(&self, group: usize, torque: f64) -> Result<Chain<'static>, Failure> {
-        self.with(|joint| {
-            if let Tightening::Torque(tightening) = &mut joint.fasteners[group].tightening {
-                tightening.torque = torque;
-            }
-        })
+        self.with(with_torque(self.joint(), group, torque))
     }
 
     /// The same joint in vacuum; plates, cells and grid are shared.
     pub fn in_vacuum(&self) -> Result<Chain<'static>, Failure> {
-        self.with(|joint| joint.service.medium = Medium::Vacuum)
+        let mut joint = self.joint().clone();
+        joint.service.medium = Medium::Vacuum;
+        self.with(joint)
     }
 
-    /// The same plates and places after a change that moves neither.
-    fn with(&self, change: impl FnOnce(&mut Joint)) -> Result<Chain<'static>, Failure> {
-        let mut joint = self.joint().clone();
-        change(&mut joint);
+    /// The same plates and places in another joint.
+    fn with(&self, joint: Joint) -> Result<Chain<'static>, Failure> {
         let mut chain = Chain {
             joint: Cow::Owned(joint),
             groups: self.groups.clone(),
@@ -179,6 +175,39 @@ impl<'a> Chain<'a> {
     fn check(&self, case: usize, path: &Path) -> Result<(), Failure> {
         path.checked("the chain")
             .map_err(|found| self.network(case, found))
+    }
+
+    /// Makes ready for many torques of one group, from the least to the largest, in one case.
+    ///
+    /// The field of bent faces is tabulated; everything else needs no preparation.
+    pub fn expect_torques(
+        &self,
+        (case, group): (usize, usize),
+        torques: [f64; 2],
+    ) -> Result<(), Failure> {
+        match &self.model {
+            Model::Cone(_) => Ok(()),
+            Model::Elastic(model) => {
+                let own: f64 = self.nominal_forces(case, self.joint()).iter().sum();
+                let factors = torques.map(|torque| {
+                    let changed = with_torque(self.joint(), group, torque);
+                    self.nominal_forces(case, &changed).iter().sum::<f64>() / own
+                });
+                model.tabulate(self, (case, factors))
+            }
+        }
+    }
+
+    /// Clamp force of every bolt in service at nominal, for a joint of these groups, N.
+    fn nominal_forces(&self, case: usize, joint: &Joint) -> Vec<f64> {
+        let at = Realisation::default();
+        let by_group: Vec<f64> = joint
+            .fasteners
+            .iter()
+            .zip(&self.groups)
+            .map(|(fastener, group)| group.service_force(joint, fastener, (case, &at)))
+            .collect();
+        self.group_of.iter().map(|group| by_group[*group]).collect()
     }
 
     /// A failure of the networks in one case.
@@ -326,4 +355,13 @@ impl<'a> Chain<'a> {
             Model::Elastic(model) => model.gas_share(self),
         }
     }
+}
+
+/// A joint with another torque on one group; a stated preload stays.
+fn with_torque(joint: &Joint, group: usize, torque: f64) -> Joint {
+    let mut changed = joint.clone();
+    if let Tightening::Torque(tightening) = &mut changed.fasteners[group].tightening {
+        tightening.torque = torque;
+    }
+    changed
 }

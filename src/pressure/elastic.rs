@@ -8,6 +8,7 @@ mod problem;
 mod readings;
 mod resolution;
 mod system;
+mod table;
 
 pub use field::{FaceField, Field, Health, Place};
 pub use mesh::{Mesh, MeshBody, MeshFace, MeshLayer};
@@ -16,6 +17,7 @@ pub use problem::{
     Problem, Progress, Stage, Through,
 };
 pub use resolution::Size;
+pub use table::Table;
 
 pub use readings::Face;
 

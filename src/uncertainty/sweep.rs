@@ -22,6 +22,8 @@ pub struct SweepOptions {
     pub chain: Options,
 }
 
+/// Steps that are sooner solved one by one than through a table over the force.
+const FEW_STEPS: usize = 4;
 /// Share of the stated torque at which a sweep starts unless told otherwise.
 const START: f64 = 0.25;
 /// How far past the stated and the largest torque a sweep runs unless told otherwise.
@@ -58,6 +60,9 @@ pub fn sweep_along(chain: &Chain, options: &SweepOptions) -> Result<TorqueSweep,
         .unwrap_or_else(|| BEYOND * largest.map_or(stated, |(torque, _)| torque.max(stated)));
     if !(0.0 < from && from < to && to.is_finite() && options.steps >= 2) {
         return Err(Failure::SweepRange { from, to });
+    }
+    if options.steps > FEW_STEPS {
+        chain.expect_torques((case, options.group), [from, to])?;
     }
     let points = (0..options.steps)
         .map(|step| from + (to - from) * step as f64 / (options.steps - 1) as f64)

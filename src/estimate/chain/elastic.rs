@@ -17,7 +17,7 @@ use crate::{
         Chain, Failure, Fineness, Realisation, Watch,
         chain::{conditions::Conditions, form::with_form},
     },
-    joint::Joint,
+    joint::{Joint, Medium},
     pressure::elastic::{self, Field},
     resistance::{Path, columns::Heat},
 };
@@ -48,6 +48,8 @@ struct Case {
     path: Path,
     /// Pressures for drawings.
     shown: OnceLock<Vec<f64>>,
+    /// Bounds of form and flatness worked out at another force; none where they are this case's own.
+    bounds: Option<([f64; 2], [f64; 2])>,
     spread: OnceLock<Result<Spread, Failure>>,
 }
 
@@ -94,6 +96,7 @@ impl ElasticModel {
                     heat,
                     path,
                     shown: OnceLock::new(),
+                    bounds: self.bounds(chain, case),
                     spread: OnceLock::new(),
                 }))
             })
@@ -103,6 +106,21 @@ impl ElasticModel {
             bank: self.bank.clone(),
             cases,
         })
+    }
+
+    /// Bounds that the chain this one comes from has worked out for the same medium.
+    ///
+    /// Bent faces need a contact of their own for every force; what rigid heads or stuck faces do
+    /// to the resistance changes little between them, so one set serves the torques of a sweep.
+    fn bounds(&self, chain: &Chain, case: usize) -> Option<([f64; 2], [f64; 2])> {
+        let parent = self.cases.get(case)?;
+        let interface = parent.conditions.faces.local.interface();
+        let vacuum = matches!(chain.joint().service.medium, Medium::Vacuum);
+        if chain.joint().is_flat() || interface.gas.is_none() != vacuum {
+            return None;
+        }
+        let spread = parent.spread.get()?.as_ref().ok()?;
+        Some((spread.form, spread.bent))
     }
 
     pub(super) fn fineness(&self) -> Fineness {
@@ -128,15 +146,18 @@ impl ElasticModel {
         if *at == Realisation::default() {
             return Ok(nominal.path.clone());
         }
-        let spread = nominal
-            .spread
-            .get_or_init(|| self.spread(chain, nominal))
-            .as_ref()
-            .map_err(Clone::clone)?;
+        let spread = self.spread_of(chain, nominal)?;
         let departure = spread.gauge.departure(conditions);
         let moved = spread.response.applied(&nominal.path, &departure);
         let form = between(spread.form, at.field) * between(spread.bent, at.flatness);
         Ok(with_form(moved, form))
+    }
+
+    fn spread_of<'c>(&self, chain: &Chain, case: &'c Case) -> Result<&'c Spread, Failure> {
+        case.spread
+            .get_or_init(|| self.spread(chain, case))
+            .as_ref()
+            .map_err(Clone::clone)
     }
 
     /// Field, heat and path on one level under some conditions.
@@ -177,6 +198,14 @@ impl ElasticModel {
                 .map(|departure| self.departed(chain, &case.conditions, departure))
                 .collect::<Result<Vec<Path>, Failure>>()
         })?;
+        if let Some((form, bent)) = case.bounds {
+            return Ok(Spread {
+                gauge,
+                response,
+                form,
+                bent,
+            });
+        }
         let ratio = |variant: &Variant| {
             let (_, _, path) = self.solved(
                 chain,
@@ -241,6 +270,27 @@ impl ElasticModel {
             (&case.conditions, &Factors::NONE),
         )?;
         Ok((coarse.source_to_sink / case.path.source_to_sink - 1.0).abs())
+    }
+
+    /// Tabulates the field of bent faces from the least to the largest factor on the forces of a
+    /// case, on the ground level as far as the draws reach; works out what the draws need there.
+    pub(super) fn tabulate(
+        &self,
+        chain: &Chain,
+        (case, [low, high]): (usize, [f64; 2]),
+    ) -> Result<(), Failure> {
+        if chain.joint().is_flat() {
+            return Ok(());
+        }
+        let nominal = &self.cases[case];
+        let forces = &nominal.conditions.forces;
+        let reach = response::FORCE_REACH;
+        self.bank
+            .tabulate(chain.joint(), self.level(), (forces, [low, high]))?;
+        self.bank
+            .tabulate(chain.joint(), GROUND, (forces, [low / reach, high * reach]))?;
+        self.spread_of(chain, nominal)?;
+        Ok(())
     }
 
     /// Share of what the gas takes off the joint's resistance.

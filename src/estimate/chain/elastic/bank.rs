@@ -12,11 +12,14 @@ use crate::{
         },
     },
     joint::Joint,
-    pressure::elastic::{self, Field, Fineness},
+    pressure::elastic::{self, Field, Fineness, Table},
 };
 
 /// Relative difference of two force patterns below which one is the other times a factor.
 const SAME_PATTERN: f64 = 1e-9;
+/// Error allowed in the middle of an interval of a table over force; half of it or less is left
+/// once the middle is a node.
+const TABLE_ERROR: f64 = 0.01;
 /// Levels from coarse to fine.
 const LEVELS: [Fineness; 4] = [
     Fineness::Coarse,
@@ -33,6 +36,8 @@ pub(super) struct Bank {
     most_bytes: u64,
     asperities: OnceLock<f64>,
     solved: Mutex<Vec<Solved>>,
+    /// Tables over the force, with level and the forces at factor 1.
+    tables: Mutex<Vec<(Fineness, Vec<f64>, Arc<Table>)>>,
     plates: [OnceLock<Arc<Plates>>; 4],
 }
 
@@ -53,6 +58,7 @@ impl Bank {
             most_bytes,
             asperities: OnceLock::new(),
             solved: Mutex::new(Vec::new()),
+            tables: Mutex::new(Vec::new()),
             plates: [const { OnceLock::new() }; 4],
         })
     }
@@ -92,6 +98,63 @@ impl Bank {
                 _ => {}
             }
         }
+        if let Some(field) = self.tabulated((fineness, variant), forces) {
+            return Ok(field);
+        }
+        self.solve(joint, (fineness, variant), (forces, &known))
+    }
+
+    /// A field between those of a table.
+    fn tabulated(
+        &self,
+        (fineness, variant): (Fineness, Variant),
+        forces: &[f64],
+    ) -> Option<Arc<Field>> {
+        if variant != Variant::Stated {
+            return None;
+        }
+        let tables = self.tables.lock().ok()?;
+        tables
+            .iter()
+            .filter(|(level, ..)| *level == fineness)
+            .find_map(|(_, base, table)| table.at(factor(base, forces)?))
+    }
+
+    /// Tabulates the field of faces that are not flat over factors on forces, N; flat ones need
+    /// no table. Tells the table's own error.
+    pub(super) fn tabulate(
+        &self,
+        joint: &Joint,
+        fineness: Fineness,
+        (forces, range): (&[f64], [f64; 2]),
+    ) -> Result<f64, Failure> {
+        if Variant::Stated.is_flat(joint) {
+            return Ok(0.0);
+        }
+        let solve = |factor: f64| {
+            let scaled: Vec<f64> = forces.iter().map(|force| force * factor).collect();
+            self.field(joint, (fineness, Variant::Stated), &scaled)
+                .map_err(|failure| match failure {
+                    Failure::Contact(found) => found,
+                    other => elastic::Failure::Unsound {
+                        what: other.to_string(),
+                    },
+                })
+        };
+        let table = Table::over(range, TABLE_ERROR, &solve).map_err(Failure::Contact)?;
+        let error = table.error;
+        if let Ok(mut tables) = self.tables.lock() {
+            tables.push((fineness, forces.to_vec(), Arc::new(table)));
+        }
+        Ok(error)
+    }
+
+    fn solve(
+        &self,
+        joint: &Joint,
+        (fineness, variant): (Fineness, Variant),
+        (forces, known): (&[f64], &[Solved]),
+    ) -> Result<Arc<Field>, Failure> {
         let task = Task {
             variant,
             fineness,
@@ -100,7 +163,7 @@ impl Bank {
             most_bytes: self.most_bytes,
             watch: &self.watch,
         };
-        let near = nearest(&known, forces);
+        let near = nearest(known, forces);
         let field = with_problem(joint, self.order, &task, |problem| match near {
             Some(near) => elastic::solve_from(problem, &near.field),
             None => elastic::solve(problem),

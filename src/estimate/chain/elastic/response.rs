@@ -15,6 +15,8 @@ pub(super) const VARIABLES: usize = 5;
 /// About where the draws lie: friction and tool move the force by a third, surfaces and laws the
 /// contact by half, gas and roughness the gap by a fourth, conductivities by a few hundredths.
 const STEPS: [f64; VARIABLES] = [0.35, 0.45, 0.25, 0.06, 0.06];
+/// Largest factor on the force in the design.
+pub(super) const FORCE_REACH: f64 = 1.42;
 /// Places at which the surface is held against direct solutions, in half widths of the design.
 const PROBES: [[f64; VARIABLES]; 4] = [
     [0.7, -0.6, 0.5, -0.8, 0.8],
