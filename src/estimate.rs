@@ -205,6 +205,7 @@ fn case_result(chain: &Chain, case: usize, numerical_error: f64) -> Result<CaseR
         resistance_lower: Some(path.resistance_lower.max(path.perfect_contact)),
         resistance_upper: path.resistance_upper,
         numerical_error,
+        draw_error: None,
         footprint: chain.footprint(),
         rise: joint.service.heat.map(|heat| Rise {
             source: Band::nominal(heat * path.source_to_sink),

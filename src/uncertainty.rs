@@ -37,8 +37,10 @@ pub fn along(chain: &Chain, options: &Options) -> Result<Estimate, Failure> {
         for case in 0..found.cases.len() {
             let draws = draws(chain, case, options)?;
             apply(&draws, joint, &mut found.cases[case]);
+            found.cases[case].draw_error = chain.draw_error(case);
         }
     }
+    found.caution_of_draws();
     let trusted = !found.flatness_decides();
     for case in &mut found.cases {
         judge(joint, case, trusted);

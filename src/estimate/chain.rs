@@ -177,6 +177,15 @@ impl<'a> Chain<'a> {
             .map_err(|found| self.network(case, found))
     }
 
+    /// Largest error of the surface from which the draws of a case are read, relative to source to
+    /// sink; none where every draw is solved or none was made.
+    pub fn draw_error(&self, case: usize) -> Option<f64> {
+        match &self.model {
+            Model::Cone(_) => None,
+            Model::Elastic(model) => model.draw_error(case),
+        }
+    }
+
     /// Makes ready for many torques of one group, from the least to the largest, in one case.
     ///
     /// The field of bent faces is tabulated; everything else needs no preparation.

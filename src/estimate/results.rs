@@ -247,6 +247,9 @@ pub struct CaseResult {
     pub resistance_upper: Option<f64>,
     /// Ring discretisation error, relative to source to sink.
     pub numerical_error: f64,
+    /// Largest error of the surface that the draws are read from, relative to source to sink; none
+    /// where every draw is solved, and without draws.
+    pub draw_error: Option<f64>,
     /// Area of the faying faces, m².
     pub footprint: f64,
     /// Temperature rises, when heat is stated.
@@ -267,6 +270,11 @@ pub struct Driver {
     /// What the engineer can do about it.
     pub remedy: &'static str,
 }
+
+/// Error of the surface of the draws above which the reader is told.
+const NOTICEABLE_DRAW_ERROR: f64 = 0.02;
+/// Solutions through which the surface of the draws goes: five variables, second order.
+const DESIGN_POINTS: usize = 21;
 
 /// Everything `estimate` found, upstream first.
 #[derive(Clone, Debug, PartialEq)]
@@ -316,6 +324,24 @@ impl Estimate {
                     .cmp(&rank(other))
                     .then(excess(one).total_cmp(&excess(other)))
             })
+    }
+
+    /// Adds a word where the surface that the draws are read from errs noticeably.
+    pub(crate) fn caution_of_draws(&mut self) {
+        let errors = self.cases.iter().filter_map(|case| case.draw_error);
+        let error = errors.fold(0.0, f64::max);
+        if error > NOTICEABLE_DRAW_ERROR {
+            self.cautions.push(Caution {
+                code: "resistance/draw-error",
+                text: format!(
+                    "low and high are read from a surface through {} solutions that errs by up to {:.1} % of source to \
+                     sink where it was tried",
+                    DESIGN_POINTS,
+                    100.0 * error
+                ),
+            });
+            registry::sort_by_gravity(&mut self.cautions);
+        }
     }
 
     /// Whether stated bow or flatness is too large for a field of flat faces.

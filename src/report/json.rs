@@ -93,6 +93,7 @@ fn case(case: &CaseResult) -> Map<String, Value> {
             }),
         ),
         ("numerical_error", json!(case.numerical_error)),
+        ("draw_error", json!(case.draw_error)),
         ("rise", rise(case)),
         (
             "requirement",

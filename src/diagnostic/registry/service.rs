@@ -91,6 +91,18 @@ pub(super) const ENTRIES: &[Entry] = &[
         ],
     ),
     Range.entry(
+        "resistance/draw-error",
+        "The draws are read from a surface that errs",
+        [
+            "Under the elastic field the draws are not solved one by one: 21 solutions around the \
+             nominal state carry a surface of second order in force, contact, gap and both \
+             conductivities, and the draws are read from it. It is tried at four more places; the \
+             largest error there is told.",
+            "Low and high may be off by so much of the nominal value. Narrow the widest input \
+             (friction, as a rule), or estimate the joint at its least and at its most force.",
+        ],
+    ),
+    Range.entry(
         "resistance/grid-error",
         "The plan grid is coarse for this joint",
         [

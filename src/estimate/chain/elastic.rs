@@ -108,6 +108,12 @@ impl ElasticModel {
         })
     }
 
+    /// Error of the surface that the draws are read from, where draws were made.
+    pub(super) fn draw_error(&self, case: usize) -> Option<f64> {
+        let spread = self.cases.get(case)?.spread.get()?.as_ref().ok()?;
+        Some(spread.response.error)
+    }
+
     /// Bounds that the chain this one comes from has worked out for the same medium.
     ///
     /// Bent faces need a contact of their own for every force; what rigid heads or stuck faces do

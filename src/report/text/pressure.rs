@@ -5,7 +5,7 @@ use crate::{
     estimate::{CaseResult, Flatness, SolvedField, SolverHealth},
     report::{
         json::differences,
-        number::{brief, four, wrapped},
+        number::{brief, four, percent, wrapped},
         text::{Detail, WIDTH},
     },
 };
@@ -51,6 +51,12 @@ pub fn field(case: &CaseResult, detail: Detail) -> String {
     }
     if detail == Detail::Full {
         line(health(&solved.health));
+        if let Some(error) = case.draw_error {
+            line(format!(
+                "draws are read from a surface through 21 solutions, off by {} where it was tried",
+                percent(error)
+            ));
+        }
     }
     text
 }
@@ -70,7 +76,7 @@ fn flatness(flatness: &Flatness) -> Option<String> {
             left,
             flat,
         } => format!(
-            "bow of {} µm {verdict}: widest gap {} µm, {} µm were the faces flat",
+            "initial gap of {} µm {verdict}: {} µm at the widest are left, {} µm were the faces flat",
             brief(initial * 1e6),
             micrometres(left),
             micrometres(flat)
