@@ -8,6 +8,9 @@ pub type Square = [[f64; 4]; 4];
 /// Most stencils, and most sums over neighbours, of any form.
 pub const MOST_STENCILS: usize = 12;
 
+/// Nodes treated at once.
+pub const LANES: usize = 4;
+
 /// One product: a stencil takes values of one component into a sum.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub struct Term {
@@ -44,14 +47,15 @@ pub trait Form: Copy + Send + Sync + 'static {
     /// Matrices of the sums through the thickness.
     fn through(&self, element: &Element) -> [Square; MOST_STENCILS];
 
-    /// Adds the products of one neighbour to the sums, `L` nodes at once.
+    /// Adds the products of one neighbour to the sums, four nodes at once.
     ///
-    /// `values` starts at the first of these nodes; components stand `step` apart.
-    fn gather<T: Number, const L: usize>(
+    /// `values` starts at the first node; components stand `step` apart. Lanes beyond an element's
+    /// nodes carry what stands there in the column; the matrices through the thickness drop it.
+    fn gather<T: Number>(
         coefficients: &[T],
         values: &[T],
         step: usize,
-        sums: &mut [[T; L]; MOST_STENCILS],
+        sums: &mut [[T; LANES]; MOST_STENCILS],
     );
 }
 
@@ -157,18 +161,18 @@ impl Form for Solid {
         ]
     }
 
-    #[expect(clippy::inline_always, reason = "the sums must stay in registers")]
-    #[inline(always)]
-    fn gather<T: Number, const L: usize>(
+    // Kept apart, so that the compiler sees whole vectors in memory; inlined, it takes them to pieces.
+    #[inline(never)]
+    fn gather<T: Number>(
         coefficients: &[T],
         values: &[T],
         step: usize,
-        sums: &mut [[T; L]; MOST_STENCILS],
+        sums: &mut [[T; LANES]; MOST_STENCILS],
     ) {
         let c: &[T; 12] = coefficients.first_chunk().expect("twelve stencils");
-        let u: &[T; L] = values.first_chunk().expect("a padded column");
-        let v: &[T; L] = values[step..].first_chunk().expect("a padded column");
-        let w: &[T; L] = values[2 * step..].first_chunk().expect("a padded column");
+        let u: &[T; LANES] = values.first_chunk().expect("a padded column");
+        let v: &[T; LANES] = values[step..].first_chunk().expect("a padded column");
+        let w: &[T; LANES] = values[2 * step..].first_chunk().expect("a padded column");
         add(&mut sums[0], c[UU], u);
         add(&mut sums[0], c[UV], v);
         add(&mut sums[1], c[MASS_X], u);
@@ -219,24 +223,23 @@ impl Form for Scalar {
         squares
     }
 
-    #[expect(clippy::inline_always, reason = "the sums must stay in registers")]
-    #[inline(always)]
-    fn gather<T: Number, const L: usize>(
+    #[inline(never)]
+    fn gather<T: Number>(
         coefficients: &[T],
         values: &[T],
         _step: usize,
-        sums: &mut [[T; L]; MOST_STENCILS],
+        sums: &mut [[T; LANES]; MOST_STENCILS],
     ) {
         let c: &[T; 2] = coefficients.first_chunk().expect("two stencils");
-        let u: &[T; L] = values.first_chunk().expect("a padded column");
+        let u: &[T; LANES] = values.first_chunk().expect("a padded column");
         add(&mut sums[0], c[0], u);
         add(&mut sums[1], c[1], u);
     }
 }
 
-#[expect(clippy::inline_always, reason = "the sums must stay in registers")]
+#[expect(clippy::inline_always, reason = "one vector operation each")]
 #[inline(always)]
-fn add<T: Number, const L: usize>(sum: &mut [T; L], factor: T, values: &[T; L]) {
+fn add<T: Number>(sum: &mut [T; LANES], factor: T, values: &[T; LANES]) {
     for (sum, value) in sum.iter_mut().zip(values) {
         *sum += factor * *value;
     }
