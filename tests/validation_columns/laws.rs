@@ -218,7 +218,7 @@ fn a_soft_layer_touches_everywhere() {
         compliance: Compliance::Layer { stiffness },
         ..case_ii(Fineness::Coarse)
     };
-    let field = soft(1e9).field();
+    let field = soft(1e7).field();
     let plan = &field.mesh.plan;
     let face = &field.faces[0];
     for column in 0..plan.columns() {
@@ -226,10 +226,11 @@ fn a_soft_layer_touches_everywhere() {
     }
     let area: f64 = face.weight.iter().sum();
     let mean = field.force() / area;
-    // 1 MPa/mm under 2 MPa: plates bend by hundredths of the closure.
+    // So soft that the plates bend by hundredths of the closure.
     let spread = face.pressure.iter().fold(0.0_f64, |most, p| most.max(*p)) / mean;
     assert!(spread > 1.0 && spread < 1.1, "{spread}");
     assert!(field.health.newton_steps <= 5, "{:?}", field.health);
+    // 10 MPa/mm still touches everywhere, unevenly.
     let firmer = soft(1e10).field();
     assert!(firmer.health.newton_steps <= 5, "{:?}", firmer.health);
     assert!(firmer.peak_pressure() > field.peak_pressure());

@@ -77,7 +77,7 @@ fn uniform_pressure_goes_straight_through_unlike_plates() {
     };
     let everywhere = Annulus {
         inner: 0.0,
-        outer: 1.0,
+        outer: 0.0285,
     };
     let mut lower = layer(&frame, 0.007);
     lower.youngs_modulus = 200e9;
@@ -96,17 +96,17 @@ fn uniform_pressure_goes_straight_through_unlike_plates() {
             end: End::Nut(everywhere),
         }],
         stops: [
-            vec![0.001, 0.004, 0.009, 0.015, 0.02, 0.025, 0.033],
-            vec![0.002, 0.006, 0.015, 0.019, 0.025, 0.032],
+            vec![0.006, 0.015, 0.025, 0.032],
+            vec![0.005, 0.015, 0.025, 0.031],
         ],
         head: Head::Uniform,
-        fineness: Fineness::Coarse,
+        fineness: Fineness::Fine,
         most_bytes: 1_000_000_000,
         progress: None,
     });
-    // Seats a thousand times wider than the plate ask for no lines of their own: only stops remain.
+    // A seat as wide as the plate asks for wide cells: the stops alone make the grid uneven.
     let field = field.expect("the patch has a field");
-    assert!(field.mesh.plan.x.len() == 9, "{:?}", field.mesh.plan.x);
+    assert!(field.mesh.plan.x.len() >= 6, "{:?}", field.mesh.plan.x);
     let face = &field.faces[0];
     for (column, pressure) in face.pressure.iter().enumerate() {
         if face.weight[column] > 0.0 {

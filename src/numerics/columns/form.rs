@@ -69,8 +69,9 @@ pub struct Solid {
     pub first: f64,
     /// Shear modulus μ, Pa.
     pub shear: f64,
-    /// Weak springs to the ground over the volume, N/m⁴: they hold what loads in balance leave free.
-    pub ground: f64,
+    /// Weak springs to the ground over the volume, N/m⁴, along the plan and through the thickness: they
+    /// hold what loads in balance leave free.
+    pub ground: [f64; 2],
 }
 
 const UU: usize = 0;
@@ -140,11 +141,11 @@ impl Form for Solid {
 
     fn through(&self, element: &Element) -> [Square; MOST_STENCILS] {
         let (first, shear) = (self.first, self.shear);
-        let sum = |slope: f64| combined(slope, &element.slope, self.ground, &element.mass);
+        let sum = |slope: f64, ground: f64| combined(slope, &element.slope, ground, &element.mass);
         let none = [[0.0; 4]; 4];
         let mixed = |factor: f64| combined(factor, &element.mixed, 0.0, &none);
         let turned = |factor: f64| combined(factor, &transposed(&element.mixed), 0.0, &none);
-        let sheared = sum(shear);
+        let sheared = sum(shear, self.ground[0]);
         [
             element.mass,
             sheared,
@@ -155,7 +156,7 @@ impl Form for Solid {
             mixed(first),
             turned(shear),
             element.mass,
-            sum(first + 2.0 * shear),
+            sum(first + 2.0 * shear, self.ground[1]),
             mixed(shear),
             turned(first),
         ]
