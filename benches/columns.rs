@@ -2,45 +2,70 @@
 
 #![allow(clippy::print_stdout, reason = "a bench shows its times")]
 
-#[path = "columns/cases.rs"]
-mod cases;
+#[path = "../tests/validation_columns/joints.rs"]
+#[allow(dead_code, reason = "tests use what a bench does not")]
+mod joints;
 
 use std::time::Instant;
 
-use cases::{Plates, case_i, case_ii, posed, sixteen};
+use joints::{Plates, case_i, case_ii, crossings};
 use ringsum::pressure::elastic::{Field, Fineness, size, solve};
 
 const RUNS: usize = 3;
 
+/// Sixteen M4 around 150 × 100 × 5 + 8 mm, bowed.
+fn sixteen(fineness: Fineness) -> Plates {
+    let mut at = crossings(&[0.008, 0.0415, 0.075, 0.1085, 0.142], &[0.008, 0.092]);
+    at.extend(crossings(&[0.008, 0.142], &[0.029, 0.05, 0.071]));
+    Plates {
+        hole: 0.00225,
+        bearing: 0.0035,
+        forces: vec![3000.0; at.len()],
+        bow: 30e-6,
+        fineness,
+        ..Plates::pair([0.15, 0.1], [0.005, 0.008], at)
+    }
+}
+
 fn main() {
+    // A case by name alone, for a profile or its memory: `case_i`, `case_ii`, `sixteen`; and a fineness.
+    let only: Vec<String> = std::env::args()
+        .skip(1)
+        .filter(|word| !word.starts_with('-'))
+        .collect();
     println!(
-        "{:9} {:7} {:>8} {:>5} {:>4} {:>8} {:>8} {:>7} {:>9} {:>8}  levels",
+        "{:8} {:7} {:>8} {:>5} {:>4} {:>8} {:>8} {:>7} {:>9} {:>8}  levels",
         "case", "", "unknowns", "steps", "CG", "1 thread", "2", "MB est.", "gap max", "p max"
     );
-    let mut growth = Vec::new();
-    for plates in [case_i(), case_ii(), sixteen()] {
+    let mut times = Vec::new();
+    let cases: [(&str, fn(Fineness) -> Plates); 3] = [
+        ("case_i", case_i),
+        ("case_ii", case_ii),
+        ("sixteen", sixteen),
+    ];
+    for (name, plates) in cases {
         for fineness in [
             Fineness::Coarse,
             Fineness::Fast,
             Fineness::Normal,
             Fineness::Fine,
         ] {
-            let one = shown(&plates, fineness);
-            if plates.name == "16 bolts" {
-                growth.push(one);
+            let words = [name.to_string(), format!("{fineness:?}")];
+            if only.iter().all(|word| words.contains(word)) {
+                times.push(shown(&words, &plates(fineness)));
             }
         }
     }
-    let (first, last) = (growth[0], growth[growth.len() - 1]);
-    println!(
-        "time grows with unknowns to the power {:.2}",
-        (last.1 / first.1).ln() / (last.0 / first.0).ln()
-    );
+    let large: Vec<_> = times.iter().filter(|time| time.0 > 4e4).collect();
+    if let (Some(first), Some(last)) = (large.first(), large.last()) {
+        let power = (last.1 / first.1).ln() / (last.0 / first.0).ln();
+        println!("time grows with unknowns to the power {power:.2}");
+    }
 }
 
 /// Unknowns and seconds on one thread.
-fn shown(plates: &Plates, fineness: Fineness) -> (f64, f64) {
-    posed(plates, fineness, |problem| {
+fn shown(words: &[String; 2], plates: &Plates) -> (f64, f64) {
+    plates.posed(|problem| {
         let best = |threads: usize| -> (f64, Field) {
             let pool = rayon::ThreadPoolBuilder::new()
                 .num_threads(threads)
@@ -60,9 +85,9 @@ fn shown(plates: &Plates, fineness: Fineness) -> (f64, f64) {
         assert!(field == other, "threads change the result");
         let health = &field.health;
         println!(
-            "{:9} {:7} {:8} {:5} {:4} {:6.2} s {:6.2} s {:7.0} {:6.3} µm {:5.1} MPa  {:?}",
-            plates.name,
-            format!("{fineness:?}"),
+            "{:8} {:7} {:8} {:5} {:4} {:6.2} s {:6.2} s {:7.0} {:6.3} µm {:5.1} MPa  {:?}",
+            words[0],
+            words[1],
             health.unknowns,
             health.newton_steps,
             health.cg_iterations,

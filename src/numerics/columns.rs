@@ -67,7 +67,7 @@ pub use region::{Disc, Region};
 pub use stencil::{gradient, lumped, mass, with_floor};
 pub use through::{Element, node_heights, span_loads};
 
-pub(crate) use form::{MOST_STENCILS, Square};
+pub(crate) use form::{LANES, MOST_STENCILS, Square};
 pub(crate) use kernel::{Coupling, Matrix, Neighbour};
 
 #[cfg(test)]

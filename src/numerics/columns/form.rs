@@ -8,6 +8,9 @@ pub type Square = [[f64; 4]; 4];
 /// Most stencils, and most sums over neighbours, of any form.
 pub const MOST_STENCILS: usize = 12;
 
+/// Nodes treated at once.
+pub const LANES: usize = 4;
+
 /// One product: a stencil takes values of one component into a sum.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub struct Term {
@@ -44,14 +47,15 @@ pub trait Form: Copy + Send + Sync + 'static {
     /// Matrices of the sums through the thickness.
     fn through(&self, element: &Element) -> [Square; MOST_STENCILS];
 
-    /// Adds the products of one neighbour to the sums, `L` nodes at once.
+    /// Adds the products of one neighbour to the sums, four nodes at once.
     ///
-    /// `values` starts at the first of these nodes; components stand `step` apart.
-    fn gather<T: Number, const L: usize>(
+    /// `values` starts at the first node; components stand `step` apart. Lanes beyond an element's
+    /// nodes carry what stands there in the column; the matrices through the thickness drop it.
+    fn gather<T: Number>(
         coefficients: &[T],
         values: &[T],
         step: usize,
-        sums: &mut [[T; L]; MOST_STENCILS],
+        sums: &mut [[T; LANES]; MOST_STENCILS],
     );
 }
 
@@ -65,8 +69,9 @@ pub struct Solid {
     pub first: f64,
     /// Shear modulus μ, Pa.
     pub shear: f64,
-    /// Weak springs to the ground over the volume, N/m⁴: they hold what loads in balance leave free.
-    pub ground: f64,
+    /// Weak springs to the ground over the volume, N/m⁴, along the plan and through the thickness: they
+    /// hold what loads in balance leave free.
+    pub ground: [f64; 2],
 }
 
 const UU: usize = 0;
@@ -136,11 +141,11 @@ impl Form for Solid {
 
     fn through(&self, element: &Element) -> [Square; MOST_STENCILS] {
         let (first, shear) = (self.first, self.shear);
-        let sum = |slope: f64| combined(slope, &element.slope, self.ground, &element.mass);
+        let sum = |slope: f64, ground: f64| combined(slope, &element.slope, ground, &element.mass);
         let none = [[0.0; 4]; 4];
         let mixed = |factor: f64| combined(factor, &element.mixed, 0.0, &none);
         let turned = |factor: f64| combined(factor, &transposed(&element.mixed), 0.0, &none);
-        let sheared = sum(shear);
+        let sheared = sum(shear, self.ground[0]);
         [
             element.mass,
             sheared,
@@ -151,24 +156,24 @@ impl Form for Solid {
             mixed(first),
             turned(shear),
             element.mass,
-            sum(first + 2.0 * shear),
+            sum(first + 2.0 * shear, self.ground[1]),
             mixed(shear),
             turned(first),
         ]
     }
 
-    #[expect(clippy::inline_always, reason = "the sums must stay in registers")]
-    #[inline(always)]
-    fn gather<T: Number, const L: usize>(
+    // Kept apart, so that the compiler sees whole vectors in memory; inlined, it takes them to pieces.
+    #[inline(never)]
+    fn gather<T: Number>(
         coefficients: &[T],
         values: &[T],
         step: usize,
-        sums: &mut [[T; L]; MOST_STENCILS],
+        sums: &mut [[T; LANES]; MOST_STENCILS],
     ) {
         let c: &[T; 12] = coefficients.first_chunk().expect("twelve stencils");
-        let u: &[T; L] = values.first_chunk().expect("a padded column");
-        let v: &[T; L] = values[step..].first_chunk().expect("a padded column");
-        let w: &[T; L] = values[2 * step..].first_chunk().expect("a padded column");
+        let u: &[T; LANES] = values.first_chunk().expect("a padded column");
+        let v: &[T; LANES] = values[step..].first_chunk().expect("a padded column");
+        let w: &[T; LANES] = values[2 * step..].first_chunk().expect("a padded column");
         add(&mut sums[0], c[UU], u);
         add(&mut sums[0], c[UV], v);
         add(&mut sums[1], c[MASS_X], u);
@@ -219,24 +224,23 @@ impl Form for Scalar {
         squares
     }
 
-    #[expect(clippy::inline_always, reason = "the sums must stay in registers")]
-    #[inline(always)]
-    fn gather<T: Number, const L: usize>(
+    #[inline(never)]
+    fn gather<T: Number>(
         coefficients: &[T],
         values: &[T],
         _step: usize,
-        sums: &mut [[T; L]; MOST_STENCILS],
+        sums: &mut [[T; LANES]; MOST_STENCILS],
     ) {
         let c: &[T; 2] = coefficients.first_chunk().expect("two stencils");
-        let u: &[T; L] = values.first_chunk().expect("a padded column");
+        let u: &[T; LANES] = values.first_chunk().expect("a padded column");
         add(&mut sums[0], c[0], u);
         add(&mut sums[1], c[1], u);
     }
 }
 
-#[expect(clippy::inline_always, reason = "the sums must stay in registers")]
+#[expect(clippy::inline_always, reason = "one vector operation each")]
 #[inline(always)]
-fn add<T: Number, const L: usize>(sum: &mut [T; L], factor: T, values: &[T; L]) {
+fn add<T: Number>(sum: &mut [T; LANES], factor: T, values: &[T; LANES]) {
     for (sum, value) in sum.iter_mut().zip(values) {
         *sum += factor * *value;
     }

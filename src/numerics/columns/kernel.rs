@@ -2,7 +2,7 @@
 
 use std::ops::{Add, AddAssign, Mul, Sub, SubAssign};
 
-use crate::numerics::columns::{Form, MOST_STENCILS, Square};
+use crate::numerics::columns::{Form, LANES, MOST_STENCILS, Square};
 
 /// `f64` for the equations themselves, `f32` for what only guides their solution.
 pub trait Number:
@@ -81,19 +81,12 @@ pub type Neighbour<'a, T> = (usize, &'a [T]);
 
 impl<F: Form, T: Number> Matrix<F, T> {
     /// Adds to `image` what the neighbours contribute to the equations of a column.
-    ///
-    /// `L` nodes are treated at once: as many as fill one register.
-    pub fn add_products<const L: usize>(
-        &self,
-        column: usize,
-        neighbours: &[Neighbour<'_, T>],
-        image: &mut [T],
-    ) {
+    pub fn add_products(&self, column: usize, neighbours: &[Neighbour<'_, T>], image: &mut [T]) {
         for slab in &self.slabs {
             match slab.nodes {
-                2 => self.add_slab::<L, 2>(slab, column, neighbours, image),
-                3 => self.add_slab::<L, 3>(slab, column, neighbours, image),
-                _ => self.add_slab::<L, 4>(slab, column, neighbours, image),
+                2 => self.add_slab::<2>(slab, column, neighbours, image),
+                3 => self.add_slab::<3>(slab, column, neighbours, image),
+                _ => self.add_slab::<4>(slab, column, neighbours, image),
             }
         }
         for coupling in &self.couplings {
@@ -110,7 +103,7 @@ impl<F: Form, T: Number> Matrix<F, T> {
         }
     }
 
-    fn add_slab<const L: usize, const N: usize>(
+    fn add_slab<const N: usize>(
         &self,
         slab: &Slab<T>,
         column: usize,
@@ -118,24 +111,17 @@ impl<F: Form, T: Number> Matrix<F, T> {
         image: &mut [T],
     ) {
         let own = &self.sets[slab.set][column * 9 * F::STENCILS..][..9 * F::STENCILS];
-        let mut into = [[T::default(); 4]; 3];
-        for pass in (0..N).step_by(L) {
-            let mut sums = [[T::default(); L]; MOST_STENCILS];
-            for (neighbour, values) in neighbours {
-                let coefficients = &own[neighbour * F::STENCILS..][..F::STENCILS];
-                F::gather::<T, L>(
-                    coefficients,
-                    &values[slab.first + pass..],
-                    slab.step,
-                    &mut sums,
-                );
-            }
-            for (sum, component) in F::INTO.iter().enumerate() {
-                let result = &mut into[*component];
-                for (factor, row) in sums[sum].iter().zip(&slab.through[sum][pass..N]) {
-                    for (result, entry) in result.iter_mut().zip(row) {
-                        *result += *factor * *entry;
-                    }
+        let mut into = [[T::default(); LANES]; 3];
+        let mut sums = [[T::default(); LANES]; MOST_STENCILS];
+        for (neighbour, values) in neighbours {
+            let coefficients = &own[neighbour * F::STENCILS..][..F::STENCILS];
+            F::gather(coefficients, &values[slab.first..], slab.step, &mut sums);
+        }
+        for (sum, component) in F::INTO.iter().enumerate() {
+            let result = &mut into[*component];
+            for (factor, row) in sums[sum].iter().zip(&slab.through[sum][..N]) {
+                for (result, entry) in result.iter_mut().zip(row) {
+                    *result += *factor * *entry;
                 }
             }
         }

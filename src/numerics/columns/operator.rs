@@ -3,7 +3,7 @@
 use rayon::prelude::*;
 
 use crate::numerics::columns::{
-    Element, Form, Matrix, Neighbour, Plan,
+    Element, Form, LANES, Matrix, Neighbour, Plan,
     kernel::{Coupling, Slab, turned},
     stencil::{coefficients, with_floor},
 };
@@ -58,9 +58,6 @@ pub struct Operator<F> {
     /// Terms of rank one.
     pub conductors: Vec<Conductor>,
 }
-
-/// Nodes that a kernel reads at once beyond an element's own.
-const LANES: usize = 4;
 
 impl<F: Form> Operator<F> {
     /// No equations yet, for groups of so many unknowns: components times nodes of a body, or 1 for a
@@ -178,7 +175,7 @@ impl<F: Form> Operator<F> {
                             count += 1;
                         }
                     }
-                    self.matrix.add_products::<2>(
+                    self.matrix.add_products(
                         i * ny + j,
                         &neighbours[..count],
                         &mut row[j * stride..][..stride],

@@ -37,7 +37,7 @@ fn with_hole(plan: &Plan) -> Region {
 const STEEL: Solid = Solid {
     first: 1.2,
     shear: 0.8,
-    ground: 0.0,
+    ground: [0.0; 2],
 };
 
 fn plate(plan: &Plan, shares: &[f64], degree: usize) -> Operator<Solid> {

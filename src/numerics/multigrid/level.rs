@@ -173,8 +173,7 @@ impl<F: Form> Level<F> {
             }
         }
         let column = line * ny + j;
-        self.matrix
-            .add_products::<4>(column, &neighbours[..count], sum);
+        self.matrix.add_products(column, &neighbours[..count], sum);
     }
 
     /// What the forward sweep has left of the right-hand side, brought to the coarser level.

@@ -31,7 +31,7 @@ fn clamped(parts: usize, stiffness: f64) -> (Operator<Solid>, Vec<f64>) {
             constants: Solid {
                 first: 1.0,
                 shear: 0.5,
-                ground: 1e-7,
+                ground: [1e-7; 2],
             },
         });
     }

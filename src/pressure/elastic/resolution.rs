@@ -24,7 +24,9 @@ const REACH: f64 = 1.5;
 const WIDEST: f64 = 0.7;
 /// Narrowest seat that still sets the spacing, in bearing radii.
 const NARROWEST_SEAT: f64 = 0.15;
-/// Thickness over bearing radius up to which a plate is thin, and up to which one element will do.
+/// Thickness over bearing radius up to which a plate is thin, in a first look and else, and up to which
+/// one element will do.
+const THIN_AT_A_GLANCE: f64 = 1.5;
 const THIN: f64 = 1.2;
 const ONE_ELEMENT: f64 = 2.5;
 /// Thickness over bearing radius that one of several elements may have.
@@ -47,7 +49,7 @@ impl Fineness {
     fn through(self, thickness: f64) -> Through {
         let several = ((thickness / ELEMENT).ceil() as usize).clamp(2, 8);
         let (elements, degree) = match self {
-            Self::Coarse | Self::Fast if thickness <= THIN => (1, 2),
+            Self::Coarse | Self::Fast if thickness <= THIN_AT_A_GLANCE => (1, 2),
             Self::Coarse | Self::Fast if thickness <= ONE_ELEMENT => (1, 3),
             Self::Coarse | Self::Fast => (several, 2),
             Self::Normal if thickness <= ONE_ELEMENT => (1, 3),
@@ -115,6 +117,15 @@ fn around(bolt: &Bolt, axis: usize, fineness: Fineness) -> Fine {
         reach: REACH * outer,
         spacing: fineness.factor() * width,
     }
+}
+
+/// Spacing of the lines near the bolt that asks for the finest.
+pub(super) fn finest_spacing(problem: &Problem) -> f64 {
+    let spacings = problem
+        .bolts
+        .iter()
+        .map(|bolt| around(bolt, 0, problem.fineness).spacing);
+    spacings.fold(f64::INFINITY, f64::min)
 }
 
 /// Ends of all bodies first, then edges, then bolt axes.

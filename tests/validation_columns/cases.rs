@@ -1,0 +1,284 @@
+//! Against the reference fields, the round solver and the effects that modelling choices have.
+
+use std::f64::consts::PI;
+
+use ringsum::pressure::{
+    elastic::{Compliance, Faces, Field, Fineness, Head, Through},
+    round,
+};
+use serde_json::Value;
+
+use crate::joints::{Plates, case_i, case_ii};
+
+const CASE_I: &str = include_str!("../data/layout/case_i.json");
+const CASE_II_FLAT: &str = include_str!("../data/layout/case_ii_flat.json");
+const CASE_II_CONCAVE: &str = include_str!("../data/layout/case_ii_concave30.json");
+
+fn parsed(text: &str) -> Value {
+    serde_json::from_str(text).expect("the data are JSON")
+}
+
+fn centre(field: &Field) -> f64 {
+    let plan = &field.mesh.plan;
+    let middle = |lines: &[f64]| 0.5 * (lines[0] + lines[lines.len() - 1]);
+    field
+        .gap_at([middle(&plan.x), middle(&plan.y)])
+        .expect("the middle is solid")
+}
+
+/// Root of the mean square of the differences of means over 2 mm cells, over that of the reference.
+fn pressure_miss(field: &Field, reference: &Value) -> f64 {
+    const SIDE: usize = 20;
+    let plan = &field.mesh.plan;
+    let middle = [&plan.x, &plan.y].map(|lines| 0.5 * (lines[0] + lines[lines.len() - 1]));
+    let (mut miss, mut whole) = (0.0, 0.0);
+    let rows = reference["p_MPa_cell_mean"].as_array().expect("a table");
+    for (i, row) in rows.iter().enumerate() {
+        for (j, wanted) in row.as_array().expect("a row").iter().enumerate() {
+            let mut sum = 0.0;
+            for s in 0..SIDE * SIDE {
+                let along = |cell: usize, sample: usize| {
+                    0.002 * (cell as f64 + (sample as f64 + 0.5) / SIDE as f64)
+                };
+                let point = [
+                    middle[0] + along(i, s / SIDE),
+                    middle[1] + along(j, s % SIDE),
+                ];
+                sum += field.pressure_at(point).unwrap_or(0.0);
+            }
+            let found = sum / (SIDE * SIDE) as f64 * 1e-6;
+            let wanted = wanted.as_f64().expect("a number");
+            miss += (found - wanted).powi(2);
+            whole += wanted * wanted;
+        }
+    }
+    (miss / whole).sqrt()
+}
+
+struct Allowed {
+    gap: f64,
+    pressure: f64,
+    radius: f64,
+}
+
+fn meets(plates: &Plates, (text, radius): (&str, f64), allowed: &Allowed) {
+    let reference = parsed(text);
+    let field = plates.field();
+    let totals = &reference["totals"];
+    let wanted = |name: &str| totals[name].as_f64().expect("a number");
+    let gap = centre(&field) * 1e6 / wanted("gap_centre_um") - 1.0;
+    let largest = field.gap_max() * 1e6 / wanted("gap_max_um") - 1.0;
+    let pressure = pressure_miss(&field, &reference);
+    let reach = field.mean_force_radius() / radius - 1.0;
+    println!("centre {gap:.4} largest {largest:.4} pressure {pressure:.4} radius {reach:.4}");
+    assert!(gap.abs() < allowed.gap, "gap at the centre: {gap}");
+    assert!(largest.abs() < allowed.gap, "largest gap: {largest}");
+    assert!(pressure < allowed.pressure, "pressure: {pressure}");
+    assert!(reach.abs() < allowed.radius, "mean force radius: {reach}");
+    let force: f64 = plates.forces.iter().sum();
+    // 1e-6: the last linear solution stops at 1e-7 of the load.
+    assert!((field.force() / force - 1.0).abs() < 1e-6);
+    assert!(field.health.energy_rise < 1e-3 && field.health.complementarity == 0.0);
+}
+
+// Mean force radii of the reference from the same study, 4.328 and 3.940 mm; the ring tables in the
+// files are too coarse for it. 3 % of gap and 6 % of pressure at the finest spacing of the study, where
+// 2 % is the files' own resampling.
+#[test]
+fn layout_cases_are_met_when_fine() {
+    let allowed = Allowed {
+        gap: 0.03,
+        pressure: 0.06,
+        radius: 0.008,
+    };
+    let fine = Fineness::Fine;
+    meets(&case_i(fine), (CASE_I, 4.328e-3), &allowed);
+    meets(&case_ii(fine), (CASE_II_FLAT, 3.940e-3), &allowed);
+    let bowed = Plates {
+        bow: 30e-6,
+        ..case_ii(fine)
+    };
+    meets(&bowed, (CASE_II_CONCAVE, 3.940e-3), &allowed);
+}
+
+#[test]
+fn layout_cases_are_nearly_met_when_fast() {
+    let allowed = Allowed {
+        gap: 0.08,
+        pressure: 0.11,
+        radius: 0.035,
+    };
+    let fast = Fineness::Fast;
+    meets(&case_i(fast), (CASE_I, 4.328e-3), &allowed);
+    meets(&case_ii(fast), (CASE_II_FLAT, 3.940e-3), &allowed);
+    let bowed = Plates {
+        bow: 30e-6,
+        ..case_ii(fast)
+    };
+    meets(&bowed, (CASE_II_CONCAVE, 3.940e-3), &allowed);
+}
+
+// Cells of 1.5, 1, 0.75 and 0.5 mm with the same cubic polynomial: what is left shrinks.
+#[test]
+fn gap_and_force_radius_converge_with_the_grid() {
+    let found: Vec<[f64; 2]> = [
+        Fineness::Coarse,
+        Fineness::Fast,
+        Fineness::Normal,
+        Fineness::Fine,
+    ]
+    .into_iter()
+    .map(|fineness| {
+        let through = Some(Through {
+            elements: 1,
+            degree: 3,
+        });
+        let field = Plates {
+            through,
+            ..case_i(fineness)
+        }
+        .field();
+        [centre(&field), field.mean_force_radius()]
+    })
+    .collect();
+    println!("{found:?}");
+    for reading in 0..2 {
+        let finest = found[3][reading];
+        let miss = |at: usize| (found[at][reading] / finest - 1.0).abs();
+        // Halving the spacing from 1.5 to 0.75 mm at least halves what is left; one bound for
+        // rounding near a chance zero.
+        assert!(
+            miss(2) < 0.5 * miss(0) + 0.002,
+            "{reading}: {} {}",
+            miss(0),
+            miss(2)
+        );
+    }
+}
+
+// 3 % of the force in rings of a quarter bearing radius: the square is twelve thicknesses wide, and the
+// round plate has its rim where the square has its edge.
+#[test]
+fn one_bolt_presses_as_in_a_round_pair() {
+    let (bearing, half) = (0.00425, 0.03);
+    let plates = Plates {
+        fineness: Fineness::Fine,
+        ..Plates::pair([2.0 * half; 2], [0.005; 2], vec![[half, half]])
+    };
+    let field = plates.field();
+    let round = round::solve(&round::Problem {
+        hole_radius: plates.hole,
+        bearing_radius: bearing,
+        rim_radius: half,
+        thickness: [0.005; 2],
+        youngs_modulus: [70e9; 2],
+        poisson: [0.33; 2],
+        head: round::Head::Uniform,
+        faces: round::Faces::Frictionless,
+        tolerance: 0.003,
+    })
+    .expect("the round pair has a solution");
+    let force = plates.forces[0];
+    for ring in 0..5 {
+        let radii = [0, 1].map(|end| plates.hole + 0.25 * bearing * f64::from(ring + end));
+        let found = field.ring_force(0, radii) / force;
+        let wanted = round.carried_within(radii[1]) - round.carried_within(radii[0]);
+        println!("{radii:?} {found:.4} {wanted:.4}");
+        assert!((found - wanted).abs() < 0.03, "{radii:?} {found} {wanted}");
+    }
+    let held = field.radius_holding(0.95) / round.radius_holding(0.95) - 1.0;
+    assert!(held.abs() < 0.02, "{held}");
+    assert!((field.force_of(0) / force - 1.0).abs() < 1e-6);
+    assert!(field.contact_area() > PI * (bearing.powi(2) - plates.hole.powi(2)));
+}
+
+// From uniform to rigid: the change of the gap near the rim, a tenth of it either way at any fineness.
+#[test]
+fn a_rigid_head_changes_a_single_bolt_as_it_changes_a_round_pair() {
+    let (bearing, half) = (0.00425, 0.03);
+    let round = |head: round::Head| {
+        round::solve(&round::Problem {
+            hole_radius: 0.00275,
+            bearing_radius: bearing,
+            rim_radius: half,
+            thickness: [0.005; 2],
+            youngs_modulus: [70e9; 2],
+            poisson: [0.33; 2],
+            head,
+            faces: round::Faces::Frictionless,
+            tolerance: 0.003,
+        })
+        .expect("the round pair has a solution")
+        .gap(0.025, 5000.0)
+    };
+    let wanted = round(round::Head::Rigid) / round(round::Head::Uniform) - 1.0;
+    for fineness in [Fineness::Fast, Fineness::Normal, Fineness::Fine] {
+        let gap = |head: Head| {
+            let plates = Plates {
+                fineness,
+                head,
+                ..Plates::pair([2.0 * half; 2], [0.005; 2], vec![[half, half]])
+            };
+            plates.field().gap_at([half + 0.025, half]).expect("solid")
+        };
+        let found = gap(Head::Rigid) / gap(Head::Uniform) - 1.0;
+        println!("{found} {wanted}");
+        assert!((found / wanted - 1.0).abs() < 0.1, "{found} {wanted}");
+    }
+}
+
+/// Change of the gap at the centre against the plain joint.
+fn effect(plain: &Plates, changed: &Plates) -> f64 {
+    let effect = centre(&changed.field()) / centre(&plain.field()) - 1.0;
+    println!("{effect:.4}");
+    effect
+}
+
+// Effects of the study at a fixed grid; tolerance a third of the effect.
+#[test]
+fn modelling_choices_move_the_gap_as_they_should() {
+    let (plain_i, plain_ii) = (case_i(Fineness::Normal), case_ii(Fineness::Normal));
+    let rigid = |plain: &Plates| Plates {
+        head: Head::Rigid,
+        ..plain.clone()
+    };
+    let near = |found: f64, wanted: f64| {
+        assert!(
+            (found - wanted).abs() < wanted.abs() / 3.0,
+            "{found} {wanted}"
+        );
+    };
+    let both = [
+        effect(&plain_i, &rigid(&plain_i)),
+        effect(&plain_ii, &rigid(&plain_ii)),
+    ];
+    println!("{both:?}");
+    near(both[1], -0.16);
+    let tapped = Plates {
+        thread: Some(1.5 * 0.004),
+        ..plain_ii.clone()
+    };
+    near(effect(&plain_ii, &tapped), -0.35);
+    let stuck = Plates {
+        faces: Faces::Stuck,
+        ..plain_ii.clone()
+    };
+    near(effect(&plain_ii, &stuck), -0.26);
+    let rough = |plain: &Plates| Plates {
+        compliance: Compliance::Asperities { stiffness: 1e14 },
+        ..plain.clone()
+    };
+    near(effect(&plain_i, &rough(&plain_i)), 0.066);
+}
+
+// Stick changes nothing between plates that are mirror images; 1e-4 is that of the study.
+#[test]
+fn identical_plates_do_not_feel_whether_they_stick() {
+    let plain = case_i(Fineness::Fast);
+    let stuck = Plates {
+        faces: Faces::Stuck,
+        ..plain.clone()
+    };
+    let change = effect(&plain, &stuck);
+    assert!(change.abs() < 1e-4, "{change}");
+}
