@@ -2,10 +2,10 @@
 
 #[path = "validation_columns_heat/exact.rs"]
 mod exact;
-#[path = "validation_columns_heat/layout.rs"]
-mod layout;
 #[path = "validation_columns_heat/laws.rs"]
 mod laws;
+#[path = "validation_columns_heat/layout.rs"]
+mod layout;
 
 use std::sync::Arc;
 

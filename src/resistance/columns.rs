@@ -51,7 +51,7 @@ mod terminals;
 mod zone;
 
 pub use conduction::{Conduction, Perfect, solve_both};
-pub use heat::{Heat, Health, Hottest};
+pub use heat::{Health, Heat, Hottest};
 pub use section::{Across, Section};
 pub use stack::{Body, Conductivity, Meeting, Side, Slab, Stack};
 pub use terminals::{Bolt, Edge, Rim, Seat, Sink, Source, Terminals};

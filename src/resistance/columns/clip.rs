@@ -29,9 +29,8 @@ impl<'a> Clip<'a> {
         match self.zone {
             Zone::Face => self.box_points([x, y], &mut visit),
             Zone::Rectangle { low, high } => {
-                let cut = |side: [f64; 2], axis: usize| {
-                    [side[0].max(low[axis]), side[1].min(high[axis])]
-                };
+                let cut =
+                    |side: [f64; 2], axis: usize| [side[0].max(low[axis]), side[1].min(high[axis])];
                 self.box_points([cut(x, 0), cut(y, 1)], &mut visit);
             }
             Zone::Disc { centre, radius } => {
@@ -50,13 +49,7 @@ impl<'a> Clip<'a> {
     }
 
     /// Points on a line of constant x between two heights.
-    fn line_points(
-        &self,
-        x: f64,
-        width: f64,
-        y: [f64; 2],
-        visit: &mut impl FnMut([f64; 2], f64),
-    ) {
+    fn line_points(&self, x: f64, width: f64, y: [f64; 2], visit: &mut impl FnMut([f64; 2], f64)) {
         if y[0] < y[1] {
             for (at, weight) in scaled(&self.across, y) {
                 visit([x, at], width * weight);

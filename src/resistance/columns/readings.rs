@@ -5,8 +5,9 @@ use std::sync::Arc;
 use crate::{
     numerics::columns::Plan,
     resistance::columns::{
-        Conductivity, Heat, Health, Hottest, Seat, Sink, Stack, Terminals, equations::Equations,
-        terminals::Ends,
+        Conductivity, Health, Heat, Hottest, Seat, Sink, Stack, Terminals,
+        equations::Equations,
+        terminals::{Ends, Grip},
     },
 };
 
@@ -25,11 +26,7 @@ pub(super) struct Reader<'a> {
 }
 
 /// Whether some interface conducts nothing and no bolt goes past it.
-pub(super) fn blocked(
-    terminals: &Terminals,
-    ends: &Ends,
-    conductances: &[Vec<Vec<f64>>],
-) -> bool {
+pub(super) fn blocked(terminals: &Terminals, ends: &Ends, conductances: &[Vec<Vec<f64>>]) -> bool {
     let past = terminals
         .bolts
         .iter()
@@ -76,7 +73,11 @@ impl Reader<'_> {
                 }))
             })
             .collect();
-        (series(per_interface.iter().copied()), per_bolt, per_interface)
+        (
+            series(per_interface.iter().copied()),
+            per_bolt,
+            per_interface,
+        )
     }
 
     /// Isothermal planes at the faces that heat must cross can only help it.
@@ -85,7 +86,12 @@ impl Reader<'_> {
     fn one_dimensional(&self, contact: f64) -> f64 {
         let bodies = &self.stack.bodies;
         let last = bodies.len() - 1;
-        let bolts = || self.terminals.bolts.iter().filter(|bolt| bolt.strength > 0.0);
+        let bolts = || {
+            self.terminals
+                .bolts
+                .iter()
+                .filter(|bolt| bolt.strength > 0.0)
+        };
         let threaded = bolts().any(|bolt| matches!(bolt.seat, Seat::Thread { .. }));
         let mut sum = contact.recip();
         for (index, (body, conductivity)) in bodies.iter().zip(self.conductivity).enumerate() {
@@ -93,14 +99,17 @@ impl Reader<'_> {
             let entry = if index == 0 {
                 sources.map(|patch| patch.node).min()
             } else {
-                self.stack.faces[index - 1].iter().map(|part| part.lower).min()
+                self.stack.faces[index - 1]
+                    .iter()
+                    .map(|part| part.lower)
+                    .min()
             };
             let exit = if index < last {
                 self.stack.faces[index].iter().map(|part| part.upper).max()
             } else if self.ends.leaves_by_side() || threaded {
                 None
             } else {
-                self.ends.sinks.iter().map(|(patch, _)| patch.node).max()
+                self.ends.sinks.iter().map(|patch| patch.node).max()
             };
             let (Some(entry), Some(exit)) = (entry, exit) else {
                 continue;
@@ -153,22 +162,8 @@ impl Reader<'_> {
                 mean(values.iter().copied().zip(volumes)) - sink_mean
             })
             .collect();
-        let zones = self
-            .ends
-            .source
-            .iter()
-            .map(|(patches, _)| {
-                let nodes = stack.bodies[0].nodes();
-                let values = patches.iter().flat_map(|patch| {
-                    let weights = patch.covered.weights.iter().enumerate();
-                    let own = &temperatures[0];
-                    weights.map(move |(column, weight)| {
-                        (own[column * nodes + patch.node], *weight)
-                    })
-                });
-                mean(values) - sink_mean
-            })
-            .collect();
+        let means = equations.zone_means().into_iter();
+        let zones = means.map(|mean| mean / heat - sink_mean).collect();
         let (interface_drops, flux) = self.across(&temperatures);
         let (contact, contact_per_bolt, contact_per_interface) = self.contacts();
         Heat {
@@ -257,8 +252,8 @@ impl Reader<'_> {
             .ends
             .sinks
             .iter()
-            .map(|(patch, grip)| match grip {
-                super::terminals::Grip::Film(h) => h * patch.covered.area(),
+            .map(|patch| match patch.grip {
+                Grip::Film(coefficient) => coefficient * patch.covered.area(),
                 _ => 0.0,
             })
             .sum();
