@@ -9,7 +9,6 @@ use crate::{
         Failure,
         columns::{
             Conductivity, Health, Stack, Terminals,
-            stack::quarters,
             terminals::{Ends, Grip, Patch},
         },
     },
@@ -63,7 +62,7 @@ pub(super) struct Equations {
     pub rise: Vec<f64>,
     /// Guidance: conductance of the bolts at every column, W/K.
     beside: Vec<f64>,
-    threads: Vec<f64>,
+    threads: Vec<Vec<Vec<f64>>>,
 }
 
 impl Equations {
@@ -200,18 +199,18 @@ impl Equations {
 
     /// Joins the bodies: `conductances` holds one value for every column of every part, W/K.
     pub(super) fn join(&mut self, conductances: &[Vec<Vec<f64>>]) -> Result<(), Failure> {
-        // Bolts are rank-one terms that the cycle does not feel; it sees them beside the faces.
-        for (parts, ties) in conductances.iter().zip(&self.ties) {
-            for (index, (part, tie)) in parts.iter().zip(ties).enumerate() {
-                let guided: Vec<f64> = if index == 0 {
-                    let extra = self.beside.iter().zip(&self.threads);
-                    part.iter()
-                        .zip(extra)
-                        .map(|(g, (b, t))| g + b + t)
-                        .collect()
-                } else {
-                    part.clone()
-                };
+        // Bolts are rank-one terms that the cycle does not feel; it sees them beside the faces, in
+        // the first part that a column belongs to.
+        for (interface, ties) in self.ties.iter().enumerate() {
+            let mut beside = self.beside.clone();
+            for (part, tie) in ties.iter().enumerate() {
+                let mut guided = conductances[interface][part].clone();
+                let threads = &self.threads[interface][part];
+                for ((guided, thread), bolt) in guided.iter_mut().zip(threads).zip(&mut beside) {
+                    if *thread > 0.0 {
+                        *guided += thread + std::mem::take(bolt);
+                    }
+                }
                 self.operator.set_tie(*tie, &guided);
             }
         }
@@ -349,29 +348,23 @@ fn arranged(stack: &Stack, arrangement: Arrangement) -> (Vec<usize>, Vec<[usize;
     }
 }
 
-/// For guidance, a trifle at every column of an interface, W/K.
-fn threads(stack: &Stack, conductivity: &[Conductivity]) -> Vec<f64> {
+/// For guidance, a trifle at every column of every part of an interface, W/K.
+fn threads(stack: &Stack, conductivity: &[Conductivity]) -> Vec<Vec<Vec<f64>>> {
     let through = stack
         .bodies
         .iter()
         .zip(conductivity)
         .map(|(body, conductivity)| conductivity.through / body.thickness())
         .fold(f64::INFINITY, f64::min);
-    let mut weights = vec![f64::INFINITY; stack.plan.columns()];
-    for body in &stack.bodies {
-        for layer in [&body.layers[0], &body.layers[body.layers.len() - 1]] {
-            for (weight, own) in weights.iter_mut().zip(quarters(&stack.plan, &layer.shares)) {
-                *weight = weight.min(THREAD * through * own);
-            }
-        }
-    }
-    weights
+    let scaled = |weights: &Vec<f64>| weights.iter().map(|w| THREAD * through * w).collect();
+    let of = |parts: &Vec<super::Meeting>| parts.iter().map(|part| scaled(&part.weights)).collect();
+    stack.faces.iter().map(of).collect()
 }
 
 fn add_faces(
     stack: &Stack,
     places: &[[usize; 2]],
-    threads: &[f64],
+    threads: &[Vec<Vec<f64>>],
     operator: &mut Operator<Scalar>,
 ) -> Vec<Vec<usize>> {
     let unknown = |operator: &Operator<Scalar>, body: usize, node: usize| {
@@ -380,7 +373,7 @@ fn add_faces(
     let mut ties = Vec::new();
     for (interface, parts) in stack.faces.iter().enumerate() {
         let mut own = Vec::new();
-        for part in parts {
+        for (part, threads) in parts.iter().zip(&threads[interface]) {
             own.push(operator.add_tie(Tie {
                 plus: unknown(operator, interface, part.upper),
                 minus: Some(unknown(operator, interface + 1, part.lower)),

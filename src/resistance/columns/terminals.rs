@@ -147,7 +147,7 @@ const THIN: f64 = 1e-6;
 const FRACTION: f64 = 0.125;
 /// Cells that the outline of a held zone cuts are held through this share of a cell; see
 /// `an_isothermal_disc_spreads_as_in_the_handbook`.
-const CUT: f64 = 0.5;
+const CUT: f64 = 0.125;
 
 impl Ends {
     pub(super) fn new(stack: &Stack, terminals: &Terminals) -> Result<Self, Failure> {
