@@ -63,7 +63,7 @@ struct Answer {
     Q_W: f64,
 }
 
-/// Element heights and degree of both plates, and the spacing near the bolts over r_w − r_h.
+/// Element heights and degree of both plates, and the spacing near the bolts over the seat's width.
 pub struct Grid {
     pub fine: f64,
     pub through: [(usize, usize); 2],
@@ -178,7 +178,7 @@ impl Case {
         [Conductivity::isotropic(self.k); 2]
     }
 
-    /// Pressure at a distance from a bolt of the quarter, MPa, from its ring forces.
+    /// Pressure at a distance from a bolt of the quarter, N/mm², from its ring forces.
     ///
     /// The rings of a quarter of a millimetre are coarser than the reference's nodes are apart, so
     /// forces jump from ring to ring; three together are smooth.
@@ -214,7 +214,7 @@ impl Case {
             + s * ((1.0 - t) * value(i + 1, j) + t * value(i + 1, j + 1))
     }
 
-    /// The reference's law for spots, W/(m² K), at a pressure in MPa.
+    /// The reference's law for spots, W/(m² K), at a pressure in N/mm².
     fn solid(&self, pressure: f64) -> f64 {
         1.25 * (self.k / 1000.0) * (0.15 / 1.6e-3) * (pressure / 1200.0).powf(0.95) * 1e6
     }
@@ -276,7 +276,7 @@ impl Profile {
 }
 
 /// Largest errors of one case on one grid.
-#[derive(Debug, Default)]
+#[derive(Default)]
 struct Worst {
     contact: f64,
     gas: f64,
@@ -323,12 +323,10 @@ impl Case {
                     heat.source_to_sink / resistance - 1.0,
                     heat.hottest.rise / hottest - 1.0,
                 ];
-                println!("{sink} {medium} {off:?}");
                 worst.resistance = worst.resistance.max(off[0].abs());
                 worst.hottest = worst.hottest.max(off[1].abs());
             }
             let off = perfect.source_to_sink / known("perfect")[0] - 1.0;
-            println!("{sink} perfect {off}");
             if sink == "edge_x" {
                 worst.edge = worst.edge.max(off.abs());
             } else {
@@ -400,7 +398,6 @@ fn layout_cases_are_met_with_the_reference_fields() {
     for name in ["i", "ii flat", "ii concave"] {
         let case = Case::read(name);
         for (grid, perfect) in [(&NORMAL, 0.002), (&FAST, 0.003)] {
-            println!("{name}");
             let stack = Arc::new(case.stack(grid));
             let fields = case.conductance(&stack);
             let worst = case.worst(&stack, fields);
@@ -440,7 +437,6 @@ fn layout_cases_are_met_with_own_fields() {
         ("ii concave", Fineness::Fast, 0.02, 0.01),
     ] {
         let worst = with_own_fields(name, fineness);
-        println!("{name} {fineness:?} {worst:?}");
         assert!(worst.resistance < bar, "{name} {}", worst.resistance);
         assert!(worst.hottest < bar, "{name} {}", worst.hottest);
         assert!(worst.contact < contact, "{name} {}", worst.contact);

@@ -164,7 +164,7 @@ impl Body {
         faces
     }
 
-    /// ∫ Z_a over a span of heights above the lowest node, as (node, integral, layer).
+    /// Integrals of the polynomials over a span of heights above the lowest node, as (node, integral, layer).
     pub(super) fn span(&self, span: [f64; 2]) -> Vec<(usize, f64, usize)> {
         let mut loads = Vec::new();
         let mut foot = 0.0;

@@ -47,9 +47,9 @@ const WHOLE: f64 = 1e-9;
 /// Integrals over a zone on one level of a face.
 #[derive(Clone, Debug, PartialEq)]
 pub(super) struct Covered {
-    /// ∫ N_i of every column, m².
+    /// Integral of the function of every column, m².
     pub weights: Vec<f64>,
-    /// ∫ N_i N_j towards all nine neighbours, m².
+    /// Integral of its product with those of all nine neighbours, m².
     pub stencil: Vec<[f64; 9]>,
 }
 
