@@ -6,7 +6,7 @@ use crate::resistance::{
     Failure,
     columns::{
         Conductivity, Health, Heat, Stack, Terminals,
-        equations::{Arrangement, Equations},
+        equations::{Arrangement, Equations, TOLERANCE},
         readings::{Reader, blocked},
         terminals::Ends,
     },
@@ -19,6 +19,8 @@ pub struct Conduction {
     conductivity: Vec<Conductivity>,
     ends: Ends,
     equations: Equations,
+    /// Residual asked for, over the load; readings are off by far less.
+    pub tolerance: f64,
 }
 
 /// Perfect contact: touching faces share their temperatures. No force and no face moves it.
@@ -104,6 +106,7 @@ impl Conduction {
             conductivity: conductivity.to_vec(),
             ends,
             equations,
+            tolerance: TOLERANCE,
         })
     }
 
@@ -131,6 +134,7 @@ impl Conduction {
             return Ok(self.reader(&conductances).blocked());
         }
         self.equations.join(&conductances)?;
+        self.equations.tolerance = self.tolerance;
         let health = self.equations.solve()?;
         let heat = self.reader(&conductances).heat(&self.equations, health);
         for (reading, value) in [

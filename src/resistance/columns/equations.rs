@@ -9,7 +9,6 @@ use crate::{
         Failure,
         columns::{
             Conductivity, Health, Stack, Terminals,
-            stack::quarters,
             terminals::{Ends, Grip, Patch},
         },
     },
@@ -21,7 +20,7 @@ const SOLVER: &str = "heat through the columns, by conjugate gradients,";
 /// is taken off, so that only the spread within the face matters: a millionth of the body's own.
 const HELD: f64 = 1e6;
 /// Residual asked for, over the load.
-const TOLERANCE: f64 = 1e-8;
+pub(super) const TOLERANCE: f64 = 1e-8;
 /// Heat that may be lost between source and sink before the residual is made smaller.
 const BALANCE: f64 = 1e-9;
 /// Heat that may be lost before the solution is refused.
@@ -44,7 +43,7 @@ pub(super) enum Arrangement {
 
 /// One set of equations, ready for any local conductance.
 pub(super) struct Equations {
-    pub operator: Operator<Scalar>,
+    operator: Operator<Scalar>,
     multigrid: Multigrid<Scalar>,
     /// For every body its group and its lowest node there.
     places: Vec<[usize; 2]>,
@@ -54,14 +53,16 @@ pub(super) struct Equations {
     /// Conductance of an isothermal source to the plate below, W/K; none for uniform flux.
     gripped: Option<f64>,
     /// Unknowns of the sinks with what they conduct away, W/K.
-    pub drains: Vec<(usize, f64)>,
-    /// Unknowns of the source with the weights of its mean.
-    pub heated: Vec<(usize, f64)>,
+    drains: Vec<(usize, f64)>,
+    /// For every heated zone its unknowns with the weights of its mean, and its share of the heat.
+    zones: Vec<(Vec<(usize, f64)>, f64)>,
+    /// Residual asked for, over the load.
+    pub tolerance: f64,
     /// Temperatures of the last solution.
     pub rise: Vec<f64>,
     /// Guidance: conductance of the bolts at every column, W/K.
     beside: Vec<f64>,
-    threads: Vec<f64>,
+    threads: Vec<Vec<Vec<f64>>>,
 }
 
 impl Equations {
@@ -90,55 +91,61 @@ impl Equations {
             Arrangement::Merged => Vec::new(),
             Arrangement::Apart => add_faces(stack, &places, &threads, &mut operator),
         };
-        let stiffness =
-            |body: usize| HELD * conductivity[body].through / stack.bodies[body].thickness();
+        let factor = |body: usize, grip: Grip| {
+            let [x, y] = conductivity[body].along;
+            match grip {
+                Grip::None => 0.0,
+                Grip::Film(coefficient) => coefficient,
+                Grip::Held => HELD * conductivity[body].through / stack.bodies[body].thickness(),
+                Grip::Cut(thin) | Grip::Side(thin) => thin * (x * y).sqrt(),
+            }
+        };
         let last = stack.bodies.len() - 1;
         let unknown = |operator: &Operator<Scalar>, body: usize, node: usize| {
             operator.unknown(places[body][0], 0, places[body][1] + node)
         };
-        let mut drains = Vec::new();
-        let in_plane = conductivity[last].along;
-        for (patch, grip) in &ends.sinks {
-            let factor = match grip {
-                Grip::Film(coefficient) => *coefficient,
-                Grip::Held => stiffness(last),
-                Grip::Side(thin) => thin * (in_plane[0] * in_plane[1]).sqrt(),
-            };
-            let plus = unknown(&operator, last, patch.node);
-            let stencil = grip_of(patch, factor);
-            for (column, row) in stencil.iter().enumerate() {
-                let pull: f64 = row.iter().sum();
-                if pull != 0.0 {
-                    drains.push((operator.place(column, plus), pull));
-                }
-            }
+        // Adds the tie of a patch to the ground and returns what it conducts at every place.
+        let grip = |operator: &mut Operator<Scalar>, body: usize, patch: &Patch| {
+            let plus = unknown(operator, body, patch.node);
+            let stencil = patch.covered.times(factor(body, patch.grip)).stencil;
+            let pulls: Vec<(usize, f64)> = stencil
+                .iter()
+                .map(|row| row.iter().sum::<f64>())
+                .enumerate()
+                .filter(|(_, pull)| *pull != 0.0)
+                .map(|(column, pull)| (operator.place(column, plus), pull))
+                .collect();
             operator.add_tie(Tie {
                 plus,
                 minus: None,
                 stencil,
             });
+            pulls
+        };
+        let mut drains = Vec::new();
+        for patch in &ends.sinks {
+            drains.extend(grip(&mut operator, last, patch));
         }
-        let mut heated = Vec::new();
+        let mut zones = Vec::new();
         let mut gripped = None;
         for (patches, share) in &ends.source {
-            let whole: f64 = patches.iter().map(|patch| patch.covered.area()).sum();
+            let mut own = Vec::new();
             for patch in patches {
-                let plus = unknown(&operator, 0, patch.node);
-                for (column, weight) in patch.covered.weights.iter().enumerate() {
-                    if *weight != 0.0 {
-                        heated.push((operator.place(column, plus), share * weight / whole));
-                    }
-                }
                 if ends.isothermal {
-                    let factor = stiffness(0);
-                    gripped = Some(factor * whole);
-                    operator.add_tie(Tie {
-                        plus,
-                        minus: None,
-                        stencil: grip_of(patch, factor),
-                    });
+                    own.extend(grip(&mut operator, 0, patch));
+                } else {
+                    let plus = unknown(&operator, 0, patch.node);
+                    let weights = patch.covered.weights.iter().enumerate();
+                    let heated = weights.filter(|(_, weight)| **weight != 0.0);
+                    own.extend(heated.map(|(column, w)| (operator.place(column, plus), *w)));
                 }
             }
+            let whole: f64 = own.iter().map(|(_, weight)| weight).sum();
+            gripped = ends.isothermal.then_some(whole);
+            for (_, weight) in &mut own {
+                *weight /= whole;
+            }
+            zones.push((own, *share));
         }
         let mut beside = vec![0.0; stack.plan.columns()];
         for (bolt, both) in terminals.bolts.iter().zip(&ends.bolts) {
@@ -161,8 +168,10 @@ impl Equations {
             });
         }
         let mut load = operator.zeros();
-        for (place, weight) in &heated {
-            load[*place] += weight * gripped.unwrap_or(1.0);
+        for (zone, share) in &zones {
+            for (place, weight) in zone {
+                load[*place] += share * weight * gripped.unwrap_or(1.0);
+            }
         }
         let multigrid = Multigrid::new(&operator, Coarsening::FULL).map_err(|_| stopped(0, 1.0))?;
         Ok(Self {
@@ -174,7 +183,8 @@ impl Equations {
             load,
             gripped,
             drains,
-            heated,
+            zones,
+            tolerance: TOLERANCE,
             beside,
             threads,
         })
@@ -189,18 +199,18 @@ impl Equations {
 
     /// Joins the bodies: `conductances` holds one value for every column of every part, W/K.
     pub(super) fn join(&mut self, conductances: &[Vec<Vec<f64>>]) -> Result<(), Failure> {
-        // Bolts are rank-one terms that the cycle does not feel; it sees them beside the faces.
-        for (parts, ties) in conductances.iter().zip(&self.ties) {
-            for (index, (part, tie)) in parts.iter().zip(ties).enumerate() {
-                let guided: Vec<f64> = if index == 0 {
-                    let extra = self.beside.iter().zip(&self.threads);
-                    part.iter()
-                        .zip(extra)
-                        .map(|(g, (b, t))| g + b + t)
-                        .collect()
-                } else {
-                    part.clone()
-                };
+        // Bolts are rank-one terms that the cycle does not feel; it sees them beside the faces, in
+        // the first part that a column belongs to.
+        for (interface, ties) in self.ties.iter().enumerate() {
+            let mut beside = self.beside.clone();
+            for (part, tie) in ties.iter().enumerate() {
+                let mut guided = conductances[interface][part].clone();
+                let threads = &self.threads[interface][part];
+                for ((guided, thread), bolt) in guided.iter_mut().zip(threads).zip(&mut beside) {
+                    if *thread > 0.0 {
+                        *guided += thread + std::mem::take(bolt);
+                    }
+                }
                 self.operator.set_tie(*tie, &guided);
             }
         }
@@ -217,18 +227,15 @@ impl Equations {
 
     /// Solves from the last temperatures until source and sink agree.
     pub(super) fn solve(&mut self) -> Result<Health, Failure> {
-        let mut unit = self.operator.zeros();
-        for (place, weight) in &self.heated {
-            unit[*place] += weight;
-        }
-        let unit = self.operator.dot(&unit, &unit).sqrt();
+        let loaded = self.operator.dot(&self.load, &self.load).sqrt();
+        let unit = loaded / self.gripped.unwrap_or(1.0);
         let mut health = Health {
             iterations: 0,
             residual: f64::INFINITY,
             balance: f64::INFINITY,
             unknowns: self.operator.unknowns(),
         };
-        let mut tolerance = TOLERANCE;
+        let mut tolerance = self.tolerance;
         for _ in 0..ROUNDS {
             // A held source loads the equations with far more than passes through them: what
             // passes is the measure. It is known after the first round.
@@ -256,7 +263,7 @@ impl Equations {
             health.iterations = done + iterations;
             health.residual = residual;
             health.balance = ((self.drained() - self.heat()) / self.heat()).abs();
-            if stalled && !(health.balance < LOST && tolerance < TOLERANCE) {
+            if stalled && !(health.balance < LOST && tolerance < self.tolerance) {
                 return Err(stopped(health.iterations, residual));
             }
             let settled = self.gripped.is_none() || done > 0;
@@ -290,11 +297,18 @@ impl Equations {
 
     /// Mean over the heated zones, weighted with their heat.
     pub(super) fn source_mean(&self) -> f64 {
-        let parts = self
-            .heated
-            .iter()
-            .map(|(place, weight)| weight * self.rise[*place]);
-        parts.sum()
+        let parts = self.zones.iter().zip(self.zone_means());
+        parts.map(|((_, share), mean)| share * mean).sum()
+    }
+
+    /// Mean over every heated zone.
+    pub(super) fn zone_means(&self) -> Vec<f64> {
+        let mean = |zone: &Vec<(usize, f64)>| -> f64 {
+            zone.iter()
+                .map(|(place, weight)| weight * self.rise[*place])
+                .sum()
+        };
+        self.zones.iter().map(|(zone, _)| mean(zone)).collect()
     }
 
     /// Mean over the sinks, weighted with what they conduct.
@@ -334,29 +348,23 @@ fn arranged(stack: &Stack, arrangement: Arrangement) -> (Vec<usize>, Vec<[usize;
     }
 }
 
-/// For guidance, a trifle at every column of an interface, W/K.
-fn threads(stack: &Stack, conductivity: &[Conductivity]) -> Vec<f64> {
+/// For guidance, a trifle at every column of every part of an interface, W/K.
+fn threads(stack: &Stack, conductivity: &[Conductivity]) -> Vec<Vec<Vec<f64>>> {
     let through = stack
         .bodies
         .iter()
         .zip(conductivity)
         .map(|(body, conductivity)| conductivity.through / body.thickness())
         .fold(f64::INFINITY, f64::min);
-    let mut weights = vec![f64::INFINITY; stack.plan.columns()];
-    for body in &stack.bodies {
-        for layer in [&body.layers[0], &body.layers[body.layers.len() - 1]] {
-            for (weight, own) in weights.iter_mut().zip(quarters(&stack.plan, &layer.shares)) {
-                *weight = weight.min(THREAD * through * own);
-            }
-        }
-    }
-    weights
+    let scaled = |weights: &Vec<f64>| weights.iter().map(|w| THREAD * through * w).collect();
+    let of = |parts: &Vec<super::Meeting>| parts.iter().map(|part| scaled(&part.weights)).collect();
+    stack.faces.iter().map(of).collect()
 }
 
 fn add_faces(
     stack: &Stack,
     places: &[[usize; 2]],
-    threads: &[f64],
+    threads: &[Vec<Vec<f64>>],
     operator: &mut Operator<Scalar>,
 ) -> Vec<Vec<usize>> {
     let unknown = |operator: &Operator<Scalar>, body: usize, node: usize| {
@@ -365,7 +373,7 @@ fn add_faces(
     let mut ties = Vec::new();
     for (interface, parts) in stack.faces.iter().enumerate() {
         let mut own = Vec::new();
-        for part in parts {
+        for (part, threads) in parts.iter().zip(&threads[interface]) {
             own.push(operator.add_tie(Tie {
                 plus: unknown(operator, interface, part.upper),
                 minus: Some(unknown(operator, interface + 1, part.lower)),
@@ -375,8 +383,4 @@ fn add_faces(
         ties.push(own);
     }
     ties
-}
-
-fn grip_of(patch: &Patch, factor: f64) -> Vec<[f64; 9]> {
-    patch.covered.times(factor).stencil
 }

@@ -5,8 +5,9 @@ use std::sync::Arc;
 use crate::{
     numerics::columns::Plan,
     resistance::columns::{
-        Conductivity, Health, Heat, Hottest, Seat, Sink, Stack, Terminals, equations::Equations,
-        terminals::Ends,
+        Conductivity, Health, Heat, Hottest, Seat, Sink, Stack, Terminals,
+        equations::Equations,
+        terminals::{Ends, Grip},
     },
 };
 
@@ -108,7 +109,7 @@ impl Reader<'_> {
             } else if self.ends.leaves_by_side() || threaded {
                 None
             } else {
-                self.ends.sinks.iter().map(|(patch, _)| patch.node).max()
+                self.ends.sinks.iter().map(|patch| patch.node).max()
             };
             let (Some(entry), Some(exit)) = (entry, exit) else {
                 continue;
@@ -161,20 +162,8 @@ impl Reader<'_> {
                 mean(values.iter().copied().zip(volumes)) - sink_mean
             })
             .collect();
-        let zones = self
-            .ends
-            .source
-            .iter()
-            .map(|(patches, _)| {
-                let nodes = stack.bodies[0].nodes();
-                let values = patches.iter().flat_map(|patch| {
-                    let weights = patch.covered.weights.iter().enumerate();
-                    let own = &temperatures[0];
-                    weights.map(move |(column, weight)| (own[column * nodes + patch.node], *weight))
-                });
-                mean(values) - sink_mean
-            })
-            .collect();
+        let means = equations.zone_means().into_iter();
+        let zones = means.map(|mean| mean / heat - sink_mean).collect();
         let (interface_drops, flux) = self.across(&temperatures);
         let (contact, contact_per_bolt, contact_per_interface) = self.contacts();
         Heat {
@@ -263,8 +252,8 @@ impl Reader<'_> {
             .ends
             .sinks
             .iter()
-            .map(|(patch, grip)| match grip {
-                super::terminals::Grip::Film(h) => h * patch.covered.area(),
+            .map(|patch| match patch.grip {
+                Grip::Film(coefficient) => coefficient * patch.covered.area(),
                 _ => 0.0,
             })
             .sum();

@@ -7,7 +7,7 @@ use crate::{
     resistance::columns::{
         Edge, Rim,
         clip::{parts, scaled},
-        zone::{Covered, add_point, corner_values},
+        zone::{Covered, add_stencil, add_weights, corner_values},
     },
 };
 
@@ -22,10 +22,7 @@ impl Rim {
     /// itself alone. A round rim runs through cells; a film as thin as a fraction of them is as stiff
     /// as they can bear.
     pub(super) fn covered(&self, plan: &Plan, shares: &[f64]) -> Covered {
-        let mut covered = Covered {
-            weights: vec![0.0; plan.columns()],
-            stencil: vec![[0.0; 9]; plan.columns()],
-        };
+        let mut covered = Covered::none(plan);
         match self {
             Self::Straight(edge) => straight(*edge, plan, shares, &mut covered),
             Self::Round { centre, radius } => round((*centre, *radius), plan, &mut covered),
@@ -96,12 +93,8 @@ fn round((centre, radius): ([f64; 2], f64), plan: &Plan, covered: &mut Covered) 
             let values = corner_values((point[0] - x[0]) / sides[0], (point[1] - y[0]) / sides[1]);
             let corners = plan.corners(cell);
             let length = radius * weight;
-            let before = corners.map(|column| covered.weights[column]);
-            add_point(covered, corners, (values, length / sides[0].min(sides[1])));
-            // The stencil has the depth of the cell, the weights have not.
-            for (a, column) in corners.into_iter().enumerate() {
-                covered.weights[column] = before[a] + length * values[a];
-            }
+            add_weights(covered, corners, (values, length));
+            add_stencil(covered, corners, (values, length / sides[0].min(sides[1])));
         }
     }
 }

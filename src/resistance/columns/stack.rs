@@ -2,6 +2,7 @@
 
 use crate::{
     numerics::columns::{Plan, Scalar, node_heights, span_loads},
+    pressure::elastic::Mesh,
     resistance::Failure,
 };
 
@@ -163,7 +164,7 @@ impl Body {
         faces
     }
 
-    /// ∫ Z_a over a span of heights above the lowest node, as (node, integral, layer).
+    /// Integrals of the polynomials over a span of heights above the lowest node, as (node, integral, layer).
     pub(super) fn span(&self, span: [f64; 2]) -> Vec<(usize, f64, usize)> {
         let mut loads = Vec::new();
         let mut foot = 0.0;
@@ -222,6 +223,47 @@ impl Stack {
             bodies,
             faces,
         })
+    }
+
+    /// The bodies that carry a contact, on the grid it was solved on.
+    ///
+    /// An interface has one part, or two where there are feet: the second joins the plates beside
+    /// them, across the gap that the field calls open.
+    pub fn of(mesh: &Mesh) -> Result<Self, Failure> {
+        let bodies = mesh
+            .bodies
+            .iter()
+            .map(|body| Body {
+                layers: body
+                    .layers
+                    .iter()
+                    .rev()
+                    .map(|layer| Slab {
+                        shares: layer.shares.clone(),
+                        heights: layer.heights.clone(),
+                        degree: layer.degree,
+                    })
+                    .collect(),
+            })
+            .collect();
+        let mut stack = Self::new(mesh.plan.clone(), bodies)?;
+        for (interface, face) in mesh.faces.iter().enumerate() {
+            let [upper, lower] = [interface, interface + 1].map(|body| &mesh.bodies[body]);
+            let mut parts = vec![Meeting {
+                upper: 0,
+                lower: lower.nodes - 1,
+                weights: face.weight.clone(),
+            }];
+            if face.open_weight.iter().any(|weight| *weight > 0.0) {
+                parts.push(Meeting {
+                    upper: upper.main_layer().first_node,
+                    lower: lower.main_layer().last_node(),
+                    weights: face.open_weight.clone(),
+                });
+            }
+            stack = stack.meeting(interface, parts)?;
+        }
+        Ok(stack)
     }
 
     /// The same bodies with an interface divided otherwise: the touching part first.

@@ -108,30 +108,36 @@ pub struct Terminals {
 pub(super) struct Patch {
     pub node: usize,
     pub covered: Covered,
+    pub grip: Grip,
 }
 
-/// How a sink couples.
+/// How a patch couples to a temperature.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub(super) enum Grip {
+    /// Not at all: a flux.
+    None,
     /// A film, W/(m² K).
     Film(f64),
     /// As stiff as the equations bear.
     Held,
-    /// A side: conductivity in the plane over a fraction of a cell.
+    /// Cells that the outline cuts: conductivity in the plane over a part of the cell.
+    Cut(f64),
+    /// A side: the same.
     Side(f64),
 }
+
+/// A bolt's two ends: body, node, column and weight; either adds up to one.
+pub(super) type BoltEnds = [Vec<(usize, usize, usize, f64)>; 2];
 
 /// Zones of the source, the sinks and the bolts put on the columns.
 #[derive(Clone, Debug, PartialEq)]
 pub(super) struct Ends {
-    /// For every zone its patches, brought to a sum of one, and its share of the heat.
+    /// For every zone its patches and its share of the heat.
     pub source: Vec<(Vec<Patch>, f64)>,
     pub isothermal: bool,
-    /// Heated area, m².
-    pub source_area: f64,
-    pub sinks: Vec<(Patch, Grip)>,
-    /// For every bolt the weights of its two ends on body, node and column, each adding up to one.
-    pub bolts: Vec<Option<[Vec<(usize, usize, usize, f64)>; 2]>>,
+    pub sinks: Vec<Patch>,
+    /// None where an end meets no solid.
+    pub bolts: Vec<Option<BoltEnds>>,
 }
 
 /// A straight side is held through this share of a cell.
@@ -139,22 +145,27 @@ const THIN: f64 = 1e-6;
 /// A round rim is held through this share of a cell: stiffer would force zero into every cell that
 /// the rim crosses and make the disc smaller, softer would leave a film.
 const FRACTION: f64 = 0.125;
+/// Cells that the outline of a held zone cuts are held through this share of a cell; see
+/// `an_isothermal_disc_spreads_as_in_the_handbook`.
+const CUT: f64 = 0.125;
 
 impl Ends {
     pub(super) fn new(stack: &Stack, terminals: &Terminals) -> Result<Self, Failure> {
         let plan = stack.plan();
         let first = &stack.bodies[0];
         let tops = first.open_faces(Side::Up);
-        let zone_patches = |zone: &Zone| -> Vec<Patch> { patches(plan, zone, &tops) };
         let source: Vec<(Vec<Patch>, f64)> = match &terminals.source {
             Source::Flux(zones) => zones
                 .iter()
-                .map(|(zone, share)| (zone_patches(zone), *share))
+                .map(|(zone, share)| (patches(plan, zone, (&tops, Grip::None)), *share))
                 .collect(),
             Source::Isothermal(zones) => {
-                vec![(zones.iter().flat_map(zone_patches).collect(), 1.0)]
+                let all = zones
+                    .iter()
+                    .flat_map(|zone| held_patches(plan, zone, &tops));
+                vec![(all.collect(), 1.0)]
             }
-            Source::Rim(rim) => vec![(rim_patches(stack, 0, rim), 1.0)],
+            Source::Rim(rim) => vec![(rim_patches(stack, 0, (rim, Grip::None)), 1.0)],
         };
         let area = |patches: &[Patch]| patches.iter().map(|p| p.covered.area()).sum::<f64>();
         let whole: f64 = source.iter().map(|(_, share)| share).sum();
@@ -166,7 +177,6 @@ impl Ends {
                 what: "every heated zone must cover solid and take a share of the heat",
             });
         }
-        let source_area = source.iter().map(|(patches, _)| area(patches)).sum();
         let sinks = sinks(stack, &terminals.sinks)?;
         Ok(Self {
             source: source
@@ -174,7 +184,6 @@ impl Ends {
                 .map(|(patches, share)| (patches, share / whole))
                 .collect(),
             isothermal: matches!(terminals.source, Source::Isothermal(_)),
-            source_area,
             sinks,
             bolts: terminals
                 .bolts
@@ -184,27 +193,45 @@ impl Ends {
         })
     }
 
-    /// Whether the heat enters or leaves through a side, so that it need not cross the thickness.
+    /// Whether heat leaves through a side, so that it need not cross the thickness.
     pub(super) fn leaves_by_side(&self) -> bool {
         self.sinks
             .iter()
-            .any(|(_, grip)| matches!(grip, Grip::Side(_)))
+            .any(|patch| matches!(patch.grip, Grip::Side(_)))
     }
 }
 
-fn patches(plan: &Plan, zone: &Zone, levels: &[(usize, Vec<f64>)]) -> Vec<Patch> {
+fn patches(plan: &Plan, zone: &Zone, (levels, grip): (&[(usize, Vec<f64>)], Grip)) -> Vec<Patch> {
     levels
         .iter()
         .map(|(node, shares)| Patch {
             node: *node,
             covered: zone.covered(plan, shares),
+            grip,
+        })
+        .filter(|patch| patch.covered.area() > 0.0)
+        .collect()
+}
+
+/// A zone at one temperature: stiff in the cells it fills, softer in those that its outline cuts.
+fn held_patches(plan: &Plan, zone: &Zone, levels: &[(usize, Vec<f64>)]) -> Vec<Patch> {
+    levels
+        .iter()
+        .flat_map(|(node, shares)| {
+            let grips = [Grip::Held, Grip::Cut(CUT.recip())];
+            let both = zone.gripped(plan, shares).into_iter().zip(grips);
+            both.map(|(covered, grip)| Patch {
+                node: *node,
+                covered,
+                grip,
+            })
         })
         .filter(|patch| patch.covered.area() > 0.0)
         .collect()
 }
 
 /// A side of a body: every node has its share of the height.
-fn rim_patches(stack: &Stack, body: usize, rim: &Rim) -> Vec<Patch> {
+fn rim_patches(stack: &Stack, body: usize, (rim, grip): (&Rim, Grip)) -> Vec<Patch> {
     let body = &stack.bodies[body];
     let sides: Vec<Covered> = body
         .layers
@@ -216,55 +243,48 @@ fn rim_patches(stack: &Stack, body: usize, rim: &Rim) -> Vec<Patch> {
         .map(|(node, height, layer)| Patch {
             node,
             covered: sides[layer].times(height),
+            grip,
         })
         .filter(|patch| patch.covered.area() > 0.0)
         .collect()
 }
 
-fn sinks(stack: &Stack, sinks: &[Sink]) -> Result<Vec<(Patch, Grip)>, Failure> {
+fn sinks(stack: &Stack, sinks: &[Sink]) -> Result<Vec<Patch>, Failure> {
+    let misfit = |what: &'static str| Err(Failure::Misfit { what });
+    let plan = &stack.plan;
     let last = stack.bodies.len() - 1;
     let backs = stack.bodies[last].open_faces(Side::Down);
     let mut all = Vec::new();
     for sink in sinks {
-        let (found, grip) = match sink {
+        let found = match sink {
             Sink::Film { zone, coefficient } => {
                 if !(coefficient.is_finite() && *coefficient > 0.0) {
-                    return Err(Failure::Misfit {
-                        what: "a film needs a coefficient above zero",
-                    });
+                    return misfit("a film needs a coefficient above zero");
                 }
-                (patches(&stack.plan, zone, &backs), Grip::Film(*coefficient))
+                patches(plan, zone, (&backs, Grip::Film(*coefficient)))
             }
-            Sink::Held(zone) => (patches(&stack.plan, zone, &backs), Grip::Held),
+            Sink::Held(zone) => held_patches(plan, zone, &backs),
             Sink::Rim(rim) => {
                 let thin = match rim {
                     Rim::Straight(_) => THIN,
                     Rim::Round { .. } => FRACTION,
                 };
-                (rim_patches(stack, last, rim), Grip::Side(thin.recip()))
+                rim_patches(stack, last, (rim, Grip::Side(thin.recip())))
             }
         };
         if found.is_empty() {
-            return Err(Failure::Misfit {
-                what: "every sink must cover solid",
-            });
+            return misfit("every sink must cover solid");
         }
-        all.extend(found.into_iter().map(|patch| (patch, grip)));
+        all.extend(found);
     }
     if all.is_empty() {
-        return Err(Failure::Misfit {
-            what: "heat needs a sink",
-        });
+        return misfit("heat needs a sink");
     }
     Ok(all)
 }
 
 /// Both ends of a bolt; none where one of them meets no solid.
-fn bolt_ends(
-    stack: &Stack,
-    bolt: &Bolt,
-    tops: &[(usize, Vec<f64>)],
-) -> Option<[Vec<(usize, usize, usize, f64)>; 2]> {
+fn bolt_ends(stack: &Stack, bolt: &Bolt, tops: &[(usize, Vec<f64>)]) -> Option<BoltEnds> {
     let last = stack.bodies.len() - 1;
     let ring = |annulus: [f64; 2], shares: &[f64]| -> Vec<f64> {
         let disc = |radius: f64| {

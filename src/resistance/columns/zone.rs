@@ -41,16 +41,26 @@ impl From<joint::Zone> for Zone {
     }
 }
 
+/// Part of a cell that may be missing from one that counts as filled: rounding of the clipping.
+const WHOLE: f64 = 1e-9;
+
 /// Integrals over a zone on one level of a face.
 #[derive(Clone, Debug, PartialEq)]
 pub(super) struct Covered {
-    /// ∫ N_i of every column, m².
+    /// Integral of the function of every column, m².
     pub weights: Vec<f64>,
-    /// ∫ N_i N_j towards all nine neighbours, m².
+    /// Integral of its product with those of all nine neighbours, m².
     pub stencil: Vec<[f64; 9]>,
 }
 
 impl Covered {
+    pub(super) fn none(plan: &Plan) -> Self {
+        Self {
+            weights: vec![0.0; plan.columns()],
+            stencil: vec![[0.0; 9]; plan.columns()],
+        }
+    }
+
     /// Sum of the weights, m².
     pub(super) fn area(&self) -> f64 {
         self.weights.iter().sum()
@@ -91,10 +101,39 @@ impl Zone {
     /// Exact where cells are full. In partial cells the zone counts by the cell's share: which part
     /// of such a cell is solid does not matter there, as nothing else resolves it either.
     pub(super) fn covered(&self, plan: &Plan, shares: &[f64]) -> Covered {
-        let mut covered = Covered {
-            weights: vec![0.0; plan.columns()],
-            stencil: vec![[0.0; 9]; plan.columns()],
-        };
+        let mut covered = Covered::none(plan);
+        self.each_point(plan, shares, |cell, values, area| {
+            add_point(&mut covered, plan.corners(cell), (values, area));
+        });
+        covered
+    }
+
+    /// The same apart for cells that the zone fills and for cells that its outline cuts.
+    ///
+    /// In cut cells the stencil is over their narrower side, so that times a conductivity it is a
+    /// film as thin as they are: all corners of a cell that is held stiffly are held, and the zone
+    /// would be half a cell wider all round.
+    pub(super) fn gripped(&self, plan: &Plan, shares: &[f64]) -> [Covered; 2] {
+        let mut inside = vec![0.0; plan.cells()];
+        self.each_point(plan, shares, |cell, _, area| inside[cell] += area);
+        let mut both = [Covered::none(plan), Covered::none(plan)];
+        self.each_point(plan, shares, |cell, values, area| {
+            let solid = shares[cell] * plan.cell_area(cell);
+            if inside[cell] > (1.0 - WHOLE) * solid {
+                add_point(&mut both[0], plan.corners(cell), (values, area));
+            } else {
+                let [x, y] = plan.cell_sides(cell);
+                let side = (x[1] - x[0]).min(y[1] - y[0]);
+                let corners = plan.corners(cell);
+                add_weights(&mut both[1], corners, (values, area));
+                add_stencil(&mut both[1], corners, (values, area / side));
+            }
+        });
+        both
+    }
+
+    /// Calls `visit` with the cell, the values of its four functions and the solid area of points.
+    fn each_point(&self, plan: &Plan, shares: &[f64], mut visit: impl FnMut(usize, [f64; 4], f64)) {
         let clip = Clip::new(self);
         let [across, along] = self.bounds();
         for (cell, share) in shares.iter().enumerate() {
@@ -103,15 +142,12 @@ impl Zone {
             if *share <= 0.0 || apart(x, across) || apart(y, along) {
                 continue;
             }
-            let corners = plan.corners(cell);
             clip.each([x, y], |point, area| {
                 let s = (point[0] - x[0]) / (x[1] - x[0]);
                 let t = (point[1] - y[0]) / (y[1] - y[0]);
-                let values = corner_values(s, t);
-                add_point(&mut covered, corners, (values, share * area));
+                visit(cell, corner_values(s, t), share * area);
             });
         }
-        covered
     }
 }
 
@@ -121,13 +157,27 @@ pub(super) fn corner_values(s: f64, t: f64) -> [f64; 4] {
 }
 
 /// Adds a point of a cell with its weight to all integrals.
-pub(super) fn add_point(
+fn add_point(covered: &mut Covered, corners: [usize; 4], point: ([f64; 4], f64)) {
+    add_weights(covered, corners, point);
+    add_stencil(covered, corners, point);
+}
+
+pub(super) fn add_weights(
+    covered: &mut Covered,
+    corners: [usize; 4],
+    (values, weight): ([f64; 4], f64),
+) {
+    for (column, value) in corners.into_iter().zip(values) {
+        covered.weights[column] += weight * value;
+    }
+}
+
+pub(super) fn add_stencil(
     covered: &mut Covered,
     corners: [usize; 4],
     (values, weight): ([f64; 4], f64),
 ) {
     for (a, column) in corners.into_iter().enumerate() {
-        covered.weights[column] += weight * values[a];
         for (b, value) in values.iter().enumerate() {
             // Corner b seen from corner a: one line on or back along either axis.
             let across = 1 + b / 2 - a / 2;
