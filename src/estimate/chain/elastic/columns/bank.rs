@@ -6,24 +6,20 @@ use crate::{
     estimate::{
         Failure, Watch,
         chain::elastic::{
-            heat::Plates,
-            problem::{Order, Task, with_problem},
+            columns::{
+                heat::Plates,
+                problem::{Order, Task, with_problem},
+            },
+            level::{Level, place},
             variant::Variant,
         },
     },
     joint::Joint,
-    pressure::elastic::{self, Field, Fineness},
+    pressure::elastic::{self, Field},
 };
 
 /// Relative difference of two force patterns below which one is the other times a factor.
 const SAME_PATTERN: f64 = 1e-9;
-/// Levels from coarse to fine.
-const LEVELS: [Fineness; 4] = [
-    Fineness::Coarse,
-    Fineness::Fast,
-    Fineness::Normal,
-    Fineness::Fine,
-];
 
 /// The fields of one joint, for any torque and medium.
 #[derive(Debug)]
@@ -38,7 +34,7 @@ pub(super) struct Bank {
 
 #[derive(Clone, Debug)]
 struct Solved {
-    fineness: Fineness,
+    fineness: Level,
     variant: Variant,
     forces: Vec<f64>,
     field: Arc<Field>,
@@ -58,8 +54,8 @@ impl Bank {
     }
 
     /// Takes what the asperities yield, Pa/m; the first word counts, so that all fields share it.
-    pub(super) fn take_asperities(&self, stiffness: f64) {
-        self.asperities.get_or_init(|| stiffness);
+    pub(super) fn take_asperities(&self, stiffness: impl FnOnce() -> f64) {
+        self.asperities.get_or_init(stiffness);
     }
 
     /// The field under forces, N: one that is known, one that is known times a factor, or a new one.
@@ -68,7 +64,7 @@ impl Bank {
     pub(super) fn field(
         &self,
         joint: &Joint,
-        (fineness, variant): (Fineness, Variant),
+        (fineness, variant): (Level, Variant),
         forces: &[f64],
     ) -> Result<Arc<Field>, Failure> {
         let known: Vec<Solved> = self.solved.lock().map_or_else(
@@ -121,28 +117,16 @@ impl Bank {
     pub(super) fn plates(
         &self,
         joint: &Joint,
-        fineness: Fineness,
+        fineness: Level,
         field: &Field,
     ) -> Result<Arc<Plates>, Failure> {
-        let slot = &self.plates[level(fineness)];
+        let slot = &self.plates[place(fineness)];
         if let Some(plates) = slot.get() {
             return Ok(plates.clone());
         }
         let made = Arc::new(Plates::new(joint, self.order, &field.mesh).map_err(Failure::Plates)?);
         Ok(slot.get_or_init(|| made).clone())
     }
-}
-
-fn level(fineness: Fineness) -> usize {
-    LEVELS
-        .iter()
-        .position(|level| *level == fineness)
-        .unwrap_or(0)
-}
-
-/// The level whose difference tells the error of a level.
-pub(super) fn coarser(fineness: Fineness) -> Fineness {
-    LEVELS[level(fineness).saturating_sub(1)]
 }
 
 /// The factor that makes one set of forces the other; none where they differ in pattern.
@@ -174,11 +158,5 @@ mod tests {
         assert!(off.is_some_and(|off| off < 1e-12), "{off:?}");
         assert_eq!(factor(&[1.0, 2.0], &[3.0, 5.0]), None);
         assert_eq!(factor(&[1.0], &[0.0]), None);
-    }
-
-    #[test]
-    fn the_error_of_a_level_is_told_by_the_one_below() {
-        assert_eq!(coarser(Fineness::Fine), Fineness::Normal);
-        assert_eq!(coarser(Fineness::Fast), Fineness::Coarse);
     }
 }
