@@ -77,7 +77,7 @@ impl Shape {
             }
             Zone::Disc { .. } | Zone::Rectangle { .. } => return None,
         };
-        (round && seated && bare && plain(first) && plain(second)).then(|| Self {
+        (round && seated && bare && plain(first) && plain(second)).then_some(Self {
             at: *at,
             hole_radius: hole,
             bearing_radius: head.outer_radius,
@@ -152,5 +152,62 @@ fn tolerance(level: Level) -> f64 {
         Level::Fast => 0.006,
         Level::Normal => 0.003,
         Level::Fine => 0.001,
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::joint;
+
+    fn shape(sets: &[&str]) -> Option<Shape> {
+        let text = include_str!("../../../../../tests/data/joints/round_single.toml");
+        let sets: Vec<String> = sets.iter().map(|set| (*set).to_owned()).collect();
+        Shape::of(&joint::read_with(text, &sets).expect("a good joint"))
+    }
+
+    #[test]
+    fn the_reference_pair_is_round_under_any_heads_faces_and_sinks() {
+        let plain = shape(&[]).expect("round");
+        assert_eq!(
+            [plain.hole_radius, plain.bearing_radius, plain.rim_radius],
+            [3.125e-3, 5e-3, 30e-3]
+        );
+        for set in [
+            "contact.head_model=rigid",
+            "contact.faces=stuck",
+            "service.medium=air",
+            "filler={ name = \"graphite foil\" }",
+            "plate.lower.cooled={ face = \"film\", film = \"2000 W/(m²·K)\" }",
+            "plate.upper.bow=\"0 µm\"",
+        ] {
+            assert!(shape(&[set]).is_some(), "{set}");
+        }
+    }
+
+    #[test]
+    fn a_source_about_the_axis_is_an_annulus() {
+        let heated = |x: &str| {
+            format!("plate.upper.heated={{ centre = [{x}, \"0 mm\"], diameter = \"24 mm\" }}")
+        };
+        let found = shape(&[&heated("\"0 mm\"")]).expect("round");
+        assert_eq!(found.inlet, Inlet::Flux(Patch::Annulus([3.125e-3, 12e-3])));
+        assert_eq!(shape(&[&heated("\"1 mm\"")]), None);
+    }
+
+    #[test]
+    fn whatever_is_not_round_is_left_to_the_columns() {
+        for set in [
+            "fastener.at=[[\"1 µm\", \"0 mm\"]]",
+            "fastener.at=[[\"0 mm\", \"0 mm\"], [\"20 mm\", \"0 mm\"]]",
+            "fastener.hole=[\"6.25 mm\", \"6.4 mm\"]",
+            "fastener.engagement={ kind = \"tapped\", length = \"5 mm\" }",
+            "plate.upper.diameter=\"60.1 mm\"",
+            "plate.upper.bow=\"5 µm\"",
+            "plate.lower.flatness=\"5 µm\"",
+            "contact.compliance=asperities",
+        ] {
+            assert_eq!(shape(&[set]), None, "{set}");
+        }
     }
 }
