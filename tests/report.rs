@@ -138,8 +138,8 @@ fn solved(flatness: Flatness) -> Estimate {
             rounds: 23,
             force_balance: -2e-9,
             complementarity: 1e-8,
-            energy_fell: true,
-            residual: 3e-9,
+            energy_fell: Some(true),
+            residual: Some(3e-9),
             heat_balance: 1e-10,
         },
     });
@@ -550,7 +550,7 @@ fn the_solver_speaks_only_in_full() {
     );
     assert!(!full.contains("ROSE"), "{full}");
     let field = found.cases[0].pressure.solved.as_mut().expect("solved");
-    field.health.energy_fell = false;
+    field.health.energy_fell = Some(false);
     let full = text::estimate_at(&found, Detail::Full);
     assert!(full.contains("energy ROSE in a step"), "{full}");
     for flatness in [KNOWN, STATED, Flatness::Flat] {

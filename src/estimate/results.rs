@@ -175,16 +175,16 @@ pub struct SolverHealth {
     pub unknowns: usize,
     /// Steps of the contact search.
     pub steps: usize,
-    /// Rounds of the linear solver, all steps together.
+    /// Rounds of the linear solver, all steps together; none where it eliminates.
     pub rounds: usize,
     /// Force between the faces over clamp force, off from 1.
     pub force_balance: f64,
     /// Largest breach of "no pull, no overlap" over the peak pressure or the widest gap.
     pub complementarity: f64,
-    /// Whether the energy fell in every step.
-    pub energy_fell: bool,
-    /// Residual of the last linear system over its load.
-    pub residual: f64,
+    /// Whether the energy fell in every step; none where no step is taken by energy.
+    pub energy_fell: Option<bool>,
+    /// Residual of the last linear system over its load; none where it is eliminated.
+    pub residual: Option<f64>,
     /// Heat in over heat out, off from 1.
     pub heat_balance: f64,
 }

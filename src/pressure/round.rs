@@ -11,6 +11,7 @@ mod contact;
 mod edge;
 mod mesh;
 mod plate;
+mod readings;
 mod search;
 mod solution;
 

@@ -1,10 +1,11 @@
-//! The chain on a solved field: elastic contact of the whole plates, heat on the same grid.
+//! The chain on a solved field: elastic contact and heat of the whole plates.
 
-mod bank;
-mod heat;
-mod problem;
-mod readings;
+mod columns;
+mod level;
 mod response;
+mod rings;
+mod round;
+mod solver;
 mod variant;
 
 use std::sync::{Arc, OnceLock};
@@ -14,28 +15,26 @@ use rayon::prelude::*;
 use crate::{
     conductance,
     estimate::{
-        Chain, Failure, Fineness, Realisation, Watch,
+        Chain, ConeBeside, Failure, Fineness, Meeting, PressureResult, Realisation, RingRow, Watch,
         chain::{conditions::Conditions, form::with_form},
     },
     joint::{Joint, Medium},
-    pressure::elastic::{self, Field},
-    resistance::{Path, columns::Heat},
+    resistance::Path,
 };
 
-use bank::{Bank, coarser};
-use heat::{Factors, conductances};
+use columns::Columns;
+use level::{GROUND, Level, asked, coarser};
 use response::{Departure, Gauge, Response};
-use variant::{FORMS, Variant, loose_flatness};
-
-/// Surface response and bounds stand on this level; only ratios are taken from it.
-const GROUND: elastic::Fineness = elastic::Fineness::Coarse;
+use round::Round;
+use solver::{Factors, Solved, Solver};
+use variant::{Variant, loose_flatness};
 
 /// The solved field of a joint, brought to the forces and the medium of a chain.
 #[derive(Clone, Debug)]
 pub(super) struct ElasticModel {
     fineness: Fineness,
     /// Shared with the chains of other torques and media.
-    bank: Arc<Bank>,
+    solver: Arc<dyn Solver>,
     cases: Vec<Arc<Case>>,
 }
 
@@ -43,11 +42,7 @@ pub(super) struct ElasticModel {
 #[derive(Debug)]
 struct Case {
     conditions: Conditions,
-    field: Arc<Field>,
-    heat: Heat,
-    path: Path,
-    /// Pressures for drawings.
-    shown: OnceLock<Vec<f64>>,
+    solved: Arc<dyn Solved>,
     /// Bounds of form and flatness worked out at another force; none where they are this case's own.
     bounds: Option<([f64; 2], [f64; 2])>,
     spread: OnceLock<Result<Spread, Failure>>,
@@ -70,9 +65,13 @@ impl ElasticModel {
         (fineness, memory): (Fineness, u64),
         watch: &Watch,
     ) -> Result<Self, Failure> {
+        let solver: Arc<dyn Solver> = match Round::of(joint) {
+            Some(round) => Arc::new(round),
+            None => Arc::new(Columns::new(joint, memory, watch)?),
+        };
         Ok(Self {
             fineness,
-            bank: Arc::new(Bank::new(joint, memory, watch)?),
+            solver,
             cases: Vec::new(),
         })
     }
@@ -83,19 +82,14 @@ impl ElasticModel {
             .map(|case| {
                 let conditions = chain.conditions(case, &Realisation::default())?;
                 chain.refuse_open(case, &conditions.forces)?;
-                self.bank
-                    .take_asperities(asperities(chain.joint(), &conditions));
-                let (field, heat, path) = self.solved(
+                let solved = self.solved(
                     chain,
                     (self.level(), Variant::Stated),
                     (&conditions, &Factors::NONE),
                 )?;
                 Ok(Arc::new(Case {
                     conditions,
-                    field,
-                    heat,
-                    path,
-                    shown: OnceLock::new(),
+                    solved,
                     bounds: self.bounds(chain, case),
                     spread: OnceLock::new(),
                 }))
@@ -103,7 +97,7 @@ impl ElasticModel {
             .collect::<Result<Vec<Arc<Case>>, Failure>>()?;
         Ok(Self {
             fineness: self.fineness,
-            bank: self.bank.clone(),
+            solver: self.solver.clone(),
             cases,
         })
     }
@@ -133,12 +127,47 @@ impl ElasticModel {
         self.fineness
     }
 
-    fn level(&self) -> elastic::Fineness {
-        match self.fineness {
-            Fineness::Fast => elastic::Fineness::Fast,
-            Fineness::Normal => elastic::Fineness::Normal,
-            Fineness::Fine => elastic::Fineness::Fine,
-        }
+    fn level(&self) -> Level {
+        asked(self.fineness)
+    }
+
+    /// Contact and heat on one level under some conditions.
+    fn solved(
+        &self,
+        chain: &Chain,
+        task: (Level, Variant),
+        under: (&Conditions, &Factors),
+    ) -> Result<Arc<dyn Solved>, Failure> {
+        self.solver.solved(chain.joint(), task, under)
+    }
+
+    /// The pressure field of a case at nominal.
+    pub(super) fn pressure(&self, chain: &Chain, case: usize) -> Result<PressureResult, Failure> {
+        let nominal = &self.cases[case];
+        let flatness =
+            self.solver
+                .flatness(chain.joint(), self.level(), &nominal.conditions.forces)?;
+        Ok(nominal.solved.pressure(flatness, cone_beside(chain, case)?))
+    }
+
+    /// How the faces meet at a point.
+    pub(super) fn met_at(&self, case: usize, point: [f64; 2]) -> Option<Meeting> {
+        self.cases[case].solved.met_at(point)
+    }
+
+    /// Radius of a bolt's contact, m.
+    pub(super) fn contact_radius(&self, case: usize, bolt: usize) -> f64 {
+        self.cases[case].solved.contact_radius(bolt)
+    }
+
+    /// Area of the faying faces, beside feet included, m².
+    pub(super) fn footprint(&self) -> f64 {
+        self.cases[0].solved.footprint()
+    }
+
+    /// The rings around a bolt at nominal.
+    pub(super) fn rings(&self, case: usize, bolt: usize) -> Vec<RingRow> {
+        self.cases[case].solved.rings(bolt)
     }
 
     /// The path of a case at one realisation.
@@ -150,11 +179,11 @@ impl ElasticModel {
     ) -> Result<Path, Failure> {
         let nominal = &self.cases[case];
         if *at == Realisation::default() {
-            return Ok(nominal.path.clone());
+            return Ok(nominal.solved.path().clone());
         }
         let spread = self.spread_of(chain, nominal)?;
         let departure = spread.gauge.departure(conditions);
-        let moved = spread.response.applied(&nominal.path, &departure);
+        let moved = spread.response.applied(nominal.solved.path(), &departure);
         let form = between(spread.form, at.field) * between(spread.bent, at.flatness);
         Ok(with_form(moved, form))
     }
@@ -166,38 +195,14 @@ impl ElasticModel {
             .map_err(Clone::clone)
     }
 
-    /// Field, heat and path on one level under some conditions.
-    fn solved(
-        &self,
-        chain: &Chain,
-        (fineness, variant): (elastic::Fineness, Variant),
-        (conditions, factors): (&Conditions, &Factors),
-    ) -> Result<(Arc<Field>, Heat, Path), Failure> {
-        let joint = chain.joint();
-        let field = self
-            .bank
-            .field(joint, (fineness, variant), &conditions.forces)?;
-        let plates = self.bank.plates(joint, fineness, &field)?;
-        let faces = conductances(&field, self.bank.order, (conditions, factors));
-        let conductivity = [0, 1].map(|k| conditions.conductivity[k] * factors.conductivity[k]);
-        let (heat, path) = plates
-            .solve(&faces, conductivity, &conditions.shanks)
-            .map_err(Failure::Plates)?;
-        Ok((field, heat, path))
-    }
-
     /// Everything the draws of a case need, on the ground level.
     fn spread(&self, chain: &Chain, case: &Case) -> Result<Spread, Failure> {
-        let (field, _, base) = self.solved(
+        let base = self.solved(
             chain,
             (GROUND, Variant::Stated),
             (&case.conditions, &Factors::NONE),
         )?;
-        let gauge = Gauge::of(
-            &case.conditions,
-            readings::mean_pressure(&field),
-            field.gap_mean(),
-        );
+        let gauge = Gauge::of(&case.conditions, base.mean_pressure(), base.gap_mean());
         let response = Response::through(|departures| {
             departures
                 .par_iter()
@@ -213,14 +218,16 @@ impl ElasticModel {
             });
         }
         let ratio = |variant: &Variant| {
-            let (_, _, path) = self.solved(
+            let solved = self.solved(
                 chain,
                 (GROUND, *variant),
                 (&case.conditions, &Factors::NONE),
             )?;
-            Ok(path.added_by_joint / base.added_by_joint)
+            Ok(solved.path().added_by_joint / base.path().added_by_joint)
         };
-        let forms = FORMS
+        let forms = self
+            .solver
+            .forms()
             .par_iter()
             .map(ratio)
             .collect::<Result<Vec<f64>, Failure>>()?;
@@ -262,20 +269,21 @@ impl ElasticModel {
             parted,
             conductivity: [warm, cold],
         };
-        let (_, _, path) =
-            self.solved(chain, (GROUND, Variant::Stated), (&conditions, &factors))?;
-        Ok(path)
+        let solved = self.solved(chain, (GROUND, Variant::Stated), (&conditions, &factors))?;
+        Ok(solved.path().clone())
     }
 
-    /// Difference of source to sink to the next coarser level, relative.
+    /// Difference of source to sink to the next coarser level, relative, and what that does not
+    /// tell of the heat.
     pub(super) fn discretisation_error(&self, chain: &Chain) -> Result<f64, Failure> {
         let case = &self.cases[0];
-        let (_, _, coarse) = self.solved(
+        let coarse = self.solved(
             chain,
             (coarser(self.level()), Variant::Stated),
             (&case.conditions, &Factors::NONE),
         )?;
-        Ok((coarse.source_to_sink / case.path.source_to_sink - 1.0).abs())
+        let moved = coarse.path().source_to_sink / case.solved.path().source_to_sink - 1.0;
+        Ok(moved.abs() + case.solved.heat_error())
     }
 
     /// Tabulates the field of bent faces from the least to the largest factor on the forces of a
@@ -291,10 +299,11 @@ impl ElasticModel {
         let nominal = &self.cases[case];
         let forces = &nominal.conditions.forces;
         let reach = response::FORCE_REACH;
-        self.bank
-            .tabulate(chain.joint(), self.level(), (forces, [low, high]))?;
-        self.bank
-            .tabulate(chain.joint(), GROUND, (forces, [low / reach, high * reach]))?;
+        let joint = chain.joint();
+        self.solver
+            .tabulate(joint, self.level(), (forces, [low, high]))?;
+        self.solver
+            .tabulate(joint, GROUND, (forces, [low / reach, high * reach]))?;
         self.spread_of(chain, nominal)?;
         Ok(())
     }
@@ -309,41 +318,18 @@ impl ElasticModel {
         }
         interface.gas = None;
         empty.faces.local = interface.prepare();
-        let (_, _, path) = self.solved(
+        let empty = self.solved(
             chain,
             (self.level(), Variant::Stated),
             (&empty, &Factors::NONE),
         )?;
-        let share = 1.0 - case.path.added_by_joint / path.added_by_joint;
+        let share = 1.0 - case.solved.path().added_by_joint / empty.path().added_by_joint;
         Ok(if share.is_finite() {
             share.clamp(0.0, 1.0)
         } else {
             1.0
         })
     }
-}
-
-/// Pressure over closure of the asperities at the mean pressure under the heads, Pa/m.
-///
-/// ```text
-/// κ = −dp/dY   at p = Σ F/Σ A_seat
-/// ```
-///
-/// `Y` is the separation of the mean planes by the law of the gap.
-fn asperities(joint: &Joint, conditions: &Conditions) -> f64 {
-    const STEP: f64 = 0.05;
-    let seats: f64 = joint
-        .bolts()
-        .map(|(fastener, _)| {
-            let seat = fastener.head_seat;
-            std::f64::consts::PI * (seat.outer_radius.powi(2) - seat.inner_radius.powi(2))
-        })
-        .sum();
-    let pressure = conditions.forces.iter().sum::<f64>() / seats;
-    let local = &conditions.faces.local;
-    let closure =
-        local.separation(pressure * (1.0 - STEP)) - local.separation(pressure * (1.0 + STEP));
-    2.0 * STEP * pressure / closure
 }
 
 /// A factor between its ends: straight from the low one to 1 and on to the high one.
@@ -353,4 +339,19 @@ fn between([low, high]: [f64; 2], place: f64) -> f64 {
     } else {
         1.0 + place * (high - 1.0)
     }
+}
+
+/// The cone's answer at the same nominal inputs; none where it cannot carry the joint.
+fn cone_beside(chain: &Chain, case: usize) -> Result<Option<ConeBeside>, Failure> {
+    let joint = chain.joint();
+    if !joint.needs_elastic().is_empty() {
+        return Ok(None);
+    }
+    let cone = Chain::new(joint)?;
+    let state = cone.state(case, &Realisation::default())?;
+    Ok(Some(ConeBeside {
+        radius_95: cone.pressure(case, &state)?.radius_95,
+        contact: state.path.contact.recip(),
+        source_to_sink: state.path.source_to_sink,
+    }))
 }

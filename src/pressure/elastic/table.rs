@@ -79,6 +79,16 @@ impl Table {
         Ok(())
     }
 
+    /// Number of solved fields.
+    pub fn len(&self) -> usize {
+        self.nodes.len()
+    }
+
+    /// Whether there is none; never so for a table that was made.
+    pub fn is_empty(&self) -> bool {
+        self.nodes.is_empty()
+    }
+
     /// Least and largest factor on the force.
     pub fn range(&self) -> [f64; 2] {
         [self.nodes[0].0, self.nodes[self.nodes.len() - 1].0]

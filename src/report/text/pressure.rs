@@ -119,17 +119,19 @@ fn signed(share: f64) -> String {
 
 /// What the solver left over, for those who doubt it.
 fn health(health: &SolverHealth) -> String {
+    let residual = health
+        .residual
+        .map_or_else(String::new, |residual| format!(" {residual:.0e} residual,"));
     let mut text = format!(
-        "solver: {} unknowns, {} steps, {} rounds; off by {:.0e} force, {:.0e} contact, {:.0e} residual, {:.0e} heat",
+        "solver: {} unknowns, {} steps, {} rounds; off by {:.0e} force, {:.0e} contact,{residual} {:.0e} heat",
         health.unknowns,
         health.steps,
         health.rounds,
         health.force_balance.abs(),
         health.complementarity,
-        health.residual,
         health.heat_balance.abs(),
     );
-    if !health.energy_fell {
+    if health.energy_fell == Some(false) {
         let _ = write!(text, "; energy ROSE in a step");
     }
     text

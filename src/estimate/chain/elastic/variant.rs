@@ -20,13 +20,6 @@ pub(super) enum Variant {
     Bent(f64),
 }
 
-/// What bounds the form of a solved field.
-pub(super) const FORMS: [Variant; 3] = [
-    Variant::OtherHeads,
-    Variant::OtherFriction,
-    Variant::OtherCompliance,
-];
-
 impl Variant {
     pub(super) fn head(self, joint: &Joint) -> HeadModel {
         match (joint.contact.head_model, self) {

@@ -3,7 +3,10 @@
 use std::sync::{Arc, Mutex};
 
 use crate::{
-    estimate::chain::{conditions::Conditions, elastic::problem::Order},
+    estimate::chain::{
+        conditions::Conditions,
+        elastic::{columns::problem::Order, solver::Factors},
+    },
     joint::{Engagement, Joint, Outline, Sink},
     pressure::elastic::{Field, Mesh},
     resistance::{
@@ -43,22 +46,6 @@ impl std::fmt::Debug for Kept {
     fn fmt(&self, out: &mut std::fmt::Formatter<'_>) -> std::fmt::Result {
         out.debug_struct("Kept").finish_non_exhaustive()
     }
-}
-
-/// What a departure does to the faces and plates, as factors.
-#[derive(Clone, Copy, Debug)]
-pub(super) struct Factors {
-    pub(super) touching: f64,
-    pub(super) parted: f64,
-    pub(super) conductivity: [f64; 2],
-}
-
-impl Factors {
-    pub(super) const NONE: Self = Self {
-        touching: 1.0,
-        parted: 1.0,
-        conductivity: [1.0; 2],
-    };
 }
 
 /// Local conductance of every column of every part of every interface, W/(m² K).

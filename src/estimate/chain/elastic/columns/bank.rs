@@ -6,13 +6,16 @@ use crate::{
     estimate::{
         Failure, Watch,
         chain::elastic::{
-            heat::Plates,
-            problem::{Order, Task, with_problem},
+            columns::{
+                heat::Plates,
+                problem::{Order, Task, with_problem},
+            },
+            level::{Level, place},
             variant::Variant,
         },
     },
     joint::Joint,
-    pressure::elastic::{self, Field, Fineness, Table},
+    pressure::elastic::{self, Field, Table},
 };
 
 /// Relative difference of two force patterns below which one is the other times a factor.
@@ -20,13 +23,6 @@ const SAME_PATTERN: f64 = 1e-9;
 /// Error allowed in the middle of an interval of a table over force; half of it or less is left
 /// once the middle is a node.
 const TABLE_ERROR: f64 = 0.01;
-/// Levels from coarse to fine.
-const LEVELS: [Fineness; 4] = [
-    Fineness::Coarse,
-    Fineness::Fast,
-    Fineness::Normal,
-    Fineness::Fine,
-];
 
 /// The fields of one joint, for any torque and medium.
 #[derive(Debug)]
@@ -37,13 +33,13 @@ pub(super) struct Bank {
     asperities: OnceLock<f64>,
     solved: Mutex<Vec<Solved>>,
     /// Tables over the force, with level and the forces at factor 1.
-    tables: Mutex<Vec<(Fineness, Vec<f64>, Arc<Table>)>>,
+    tables: Mutex<Vec<(Level, Vec<f64>, Arc<Table>)>>,
     plates: [OnceLock<Arc<Plates>>; 4],
 }
 
 #[derive(Clone, Debug)]
 struct Solved {
-    fineness: Fineness,
+    fineness: Level,
     variant: Variant,
     forces: Vec<f64>,
     field: Arc<Field>,
@@ -64,8 +60,8 @@ impl Bank {
     }
 
     /// Takes what the asperities yield, Pa/m; the first word counts, so that all fields share it.
-    pub(super) fn take_asperities(&self, stiffness: f64) {
-        self.asperities.get_or_init(|| stiffness);
+    pub(super) fn take_asperities(&self, stiffness: impl FnOnce() -> f64) {
+        self.asperities.get_or_init(stiffness);
     }
 
     /// The field under forces, N: one that is known, one that is known times a factor, or a new one.
@@ -74,7 +70,7 @@ impl Bank {
     pub(super) fn field(
         &self,
         joint: &Joint,
-        (fineness, variant): (Fineness, Variant),
+        (fineness, variant): (Level, Variant),
         forces: &[f64],
     ) -> Result<Arc<Field>, Failure> {
         let known: Vec<Solved> = self.solved.lock().map_or_else(
@@ -107,7 +103,7 @@ impl Bank {
     /// A field between those of a table.
     fn tabulated(
         &self,
-        (fineness, variant): (Fineness, Variant),
+        (fineness, variant): (Level, Variant),
         forces: &[f64],
     ) -> Option<Arc<Field>> {
         if variant != Variant::Stated {
@@ -121,15 +117,15 @@ impl Bank {
     }
 
     /// Tabulates the field of faces that are not flat over factors on forces, N; flat ones need
-    /// no table. Tells the table's own error.
+    /// no table.
     pub(super) fn tabulate(
         &self,
         joint: &Joint,
-        fineness: Fineness,
+        fineness: Level,
         (forces, range): (&[f64], [f64; 2]),
-    ) -> Result<f64, Failure> {
+    ) -> Result<(), Failure> {
         if Variant::Stated.is_flat(joint) {
-            return Ok(0.0);
+            return Ok(());
         }
         let solve = |factor: f64| {
             let scaled: Vec<f64> = forces.iter().map(|force| force * factor).collect();
@@ -142,17 +138,21 @@ impl Bank {
                 })
         };
         let table = Table::over(range, TABLE_ERROR, &solve).map_err(Failure::Contact)?;
-        let error = table.error;
+        self.watch.tell(&format!(
+            "elastic contact over the force: {} fields, off by {:.1e} at most",
+            table.len(),
+            table.error
+        ));
         if let Ok(mut tables) = self.tables.lock() {
             tables.push((fineness, forces.to_vec(), Arc::new(table)));
         }
-        Ok(error)
+        Ok(())
     }
 
     fn solve(
         &self,
         joint: &Joint,
-        (fineness, variant): (Fineness, Variant),
+        (fineness, variant): (Level, Variant),
         (forces, known): (&[f64], &[Solved]),
     ) -> Result<Arc<Field>, Failure> {
         let task = Task {
@@ -184,28 +184,16 @@ impl Bank {
     pub(super) fn plates(
         &self,
         joint: &Joint,
-        fineness: Fineness,
+        fineness: Level,
         field: &Field,
     ) -> Result<Arc<Plates>, Failure> {
-        let slot = &self.plates[level(fineness)];
+        let slot = &self.plates[place(fineness)];
         if let Some(plates) = slot.get() {
             return Ok(plates.clone());
         }
         let made = Arc::new(Plates::new(joint, self.order, &field.mesh).map_err(Failure::Plates)?);
         Ok(slot.get_or_init(|| made).clone())
     }
-}
-
-fn level(fineness: Fineness) -> usize {
-    LEVELS
-        .iter()
-        .position(|level| *level == fineness)
-        .unwrap_or(0)
-}
-
-/// The level whose difference tells the error of a level.
-pub(super) fn coarser(fineness: Fineness) -> Fineness {
-    LEVELS[level(fineness).saturating_sub(1)]
 }
 
 /// The factor that makes one set of forces the other; none where they differ in pattern.
@@ -237,11 +225,5 @@ mod tests {
         assert!(off.is_some_and(|off| off < 1e-12), "{off:?}");
         assert_eq!(factor(&[1.0, 2.0], &[3.0, 5.0]), None);
         assert_eq!(factor(&[1.0], &[0.0]), None);
-    }
-
-    #[test]
-    fn the_error_of_a_level_is_told_by_the_one_below() {
-        assert_eq!(coarser(Fineness::Fine), Fineness::Normal);
-        assert_eq!(coarser(Fineness::Fast), Fineness::Coarse);
     }
 }

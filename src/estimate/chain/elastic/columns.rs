@@ -1,0 +1,155 @@
+//! Contact and heat of any joint on columns: the whole plates in three dimensions.
+
+mod bank;
+mod heat;
+mod problem;
+mod readings;
+
+use std::sync::{Arc, OnceLock};
+
+use crate::{
+    estimate::{
+        Failure, Flatness, Watch,
+        chain::{
+            conditions::Conditions,
+            elastic::{
+                level::{GROUND, Level},
+                solver::{Factors, Solved, Solver},
+                variant::{Variant, loose_flatness},
+            },
+        },
+    },
+    joint::Joint,
+    pressure::elastic::Field,
+    resistance::{Path, columns::Heat},
+};
+
+use bank::Bank;
+use heat::{Conductances, conductances};
+use readings::{initial, widest};
+
+/// What bounds the form of a field on columns.
+const FORMS: [Variant; 3] = [
+    Variant::OtherHeads,
+    Variant::OtherFriction,
+    Variant::OtherCompliance,
+];
+
+/// Any joint on columns.
+#[derive(Debug)]
+pub(super) struct Columns {
+    bank: Bank,
+}
+
+/// A joint on columns under one load.
+#[derive(Debug)]
+struct OnColumns {
+    field: Arc<Field>,
+    heat: Heat,
+    path: Path,
+    /// Local conductances of the first interface.
+    first: Vec<Vec<f64>>,
+    /// Pressures for drawings.
+    shown: OnceLock<Vec<f64>>,
+}
+
+impl Columns {
+    pub(super) fn new(joint: &Joint, memory: u64, watch: &Watch) -> Result<Self, Failure> {
+        Ok(Self {
+            bank: Bank::new(joint, memory, watch)?,
+        })
+    }
+}
+
+impl Solver for Columns {
+    fn solved(
+        &self,
+        joint: &Joint,
+        (level, variant): (Level, Variant),
+        (conditions, factors): (&Conditions, &Factors),
+    ) -> Result<Arc<dyn Solved>, Failure> {
+        self.bank.take_asperities(|| asperities(joint, conditions));
+        let field = self
+            .bank
+            .field(joint, (level, variant), &conditions.forces)?;
+        let plates = self.bank.plates(joint, level, &field)?;
+        let mut faces: Conductances = conductances(&field, self.bank.order, (conditions, factors));
+        let (heat, path) = plates
+            .solve(&faces, factors.conductivity(conditions), &conditions.shanks)
+            .map_err(Failure::Plates)?;
+        Ok(Arc::new(OnColumns {
+            field,
+            heat,
+            path,
+            first: faces.swap_remove(0),
+            shown: OnceLock::new(),
+        }))
+    }
+
+    fn tabulate(
+        &self,
+        joint: &Joint,
+        level: Level,
+        range: (&[f64], [f64; 2]),
+    ) -> Result<(), Failure> {
+        self.bank.tabulate(joint, level, range)
+    }
+
+    fn forms(&self) -> &'static [Variant] {
+        &FORMS
+    }
+
+    /// Flat and bent faces are solved on the ground level; the ratio of its widest gap to that of
+    /// the finer field carries them over.
+    fn flatness(&self, joint: &Joint, level: Level, forces: &[f64]) -> Result<Flatness, Failure> {
+        let field = self.bank.field(joint, (level, Variant::Stated), forces)?;
+        let left = widest(&field);
+        let height: f64 = joint.plates.iter().map(loose_flatness).sum();
+        if joint.is_flat() && height <= 0.0 {
+            return Ok(Flatness::Flat);
+        }
+        let ground = |variant: Variant| {
+            let field = self.bank.field(joint, (GROUND, variant), forces)?;
+            Ok::<f64, Failure>(widest(&field))
+        };
+        let carried = left / ground(Variant::Stated)?;
+        if joint.is_flat() {
+            return Ok(Flatness::Stated {
+                height,
+                left: [
+                    carried * ground(Variant::Bent(-1.0))?,
+                    carried * ground(Variant::Bent(1.0))?,
+                ],
+                flat: left,
+            });
+        }
+        Ok(Flatness::Known {
+            initial: initial(joint, &field),
+            left,
+            flat: carried * ground(Variant::Flat)?,
+        })
+    }
+}
+
+/// Pressure over closure of the asperities at the mean pressure under the heads, Pa/m.
+///
+/// ```text
+/// κ = −dp/dY   at p = Σ F/Σ A_seat
+/// ```
+///
+/// `Y` is the separation of the mean planes by the law of the gap.
+fn asperities(joint: &Joint, conditions: &Conditions) -> f64 {
+    const STEP: f64 = 0.05;
+    let seats: f64 = joint
+        .bolts()
+        .map(|(fastener, _)| {
+            let seat = fastener.head_seat;
+            std::f64::consts::PI * (seat.outer_radius.powi(2) - seat.inner_radius.powi(2))
+        })
+        .sum();
+    let pressure = conditions.forces.iter().sum::<f64>() / seats;
+    let local = &conditions.faces.local;
+    let closure =
+        local.separation(pressure * (1.0 - STEP)) - local.separation(pressure * (1.0 + STEP));
+    2.0 * STEP * pressure / closure
+}
