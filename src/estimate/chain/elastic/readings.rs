@@ -4,10 +4,13 @@ use crate::{
     estimate::{
         Chain, ConeBeside, Failure, Flatness, Meeting, PressureResult, Realisation, RingRow,
         SolvedField, SolverHealth,
-        chain::elastic::{
-            Case, ElasticModel, GROUND,
-            heat::{Conductances, Factors, conductances},
-            variant::{Variant, loose_flatness},
+        chain::{
+            PressedEdge,
+            elastic::{
+                Case, ElasticModel, GROUND,
+                heat::{Conductances, Factors, conductances},
+                variant::{Variant, loose_flatness},
+            },
         },
     },
     joint::Joint,
@@ -150,6 +153,44 @@ impl ElasticModel {
         (area / std::f64::consts::PI + hole * hole).sqrt()
     }
 
+    /// Where the contact reaches an edge of the faying faces of plates or feet, holes not looked at;
+    /// the place of the highest pressure there.
+    ///
+    /// A column stands at an edge when a step to a neighbouring line leaves plate or foot.
+    pub(in crate::estimate::chain) fn pressed_edge(
+        &self,
+        joint: &Joint,
+        case: usize,
+    ) -> Option<PressedEdge> {
+        let field = &self.cases[case].field;
+        let (plan, face) = (&field.mesh.plan, &field.faces[0]);
+        let floor = EDGE_FLOOR * field.peak_pressure();
+        let meets = |point: [f64; 2]| {
+            let mut plates = joint.plates.iter();
+            plates.all(|plate| plate.covers(point) && plate.stands_at(point))
+        };
+        let beside = |lines: &[f64], at: usize| {
+            let step = |to: Option<&f64>| to.map_or(f64::INFINITY, |line| (line - lines[at]).abs());
+            let width = step(lines.get(at + 1)).min(step(lines.get(at.wrapping_sub(1))));
+            [lines[at] - 0.99 * width, lines[at] + 0.99 * width]
+        };
+        let at_edge = |column: usize| {
+            let [i, j] = [column / plan.y.len(), column % plan.y.len()];
+            let (xs, ys) = (beside(&plan.x, i), beside(&plan.y, j));
+            let [x, y] = plan.place(column);
+            xs.iter().any(|x| !meets([*x, y])) || ys.iter().any(|y| !meets([x, *y]))
+        };
+        (0..face.weight.len())
+            .filter(|column| face.pressure[*column] > floor)
+            .filter(|column| face.weight[*column] >= 0.5 * face.full_weight[*column])
+            .filter(|column| at_edge(*column))
+            .max_by(|one, other| face.pressure[*one].total_cmp(&face.pressure[*other]))
+            .map(|column| PressedEdge {
+                at: plan.place(column),
+                pressure: face.pressure[column],
+            })
+    }
+
     /// Area of the faying faces, beside feet included, m².
     pub(in crate::estimate::chain) fn footprint(&self) -> f64 {
         let face = &self.cases[0].field.faces[0];
@@ -200,6 +241,9 @@ impl ElasticModel {
             .collect()
     }
 }
+
+/// Share of the peak pressure below which an edge counts as free.
+const EDGE_FLOOR: f64 = 0.01;
 
 /// Rise of the energy that is rounding and no rise.
 const ENERGY_NOISE: f64 = 1e-9;
