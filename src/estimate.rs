@@ -171,13 +171,15 @@ pub fn nominal(chain: &Chain, options: &Options) -> Result<Estimate, Failure> {
         heat: joint.service.heat,
         cautions: cautions::gathered(chain, &cases)?,
         cases,
-        assumptions: assumptions(joint),
+        assumptions: assumptions(chain),
     })
 }
 
 /// What the file did not state, and what this chain takes for itself.
-fn assumptions(joint: &Joint) -> Vec<Assumption> {
-    let mut all = joint.assumptions.clone();
+fn assumptions(chain: &Chain) -> Vec<Assumption> {
+    let mut all = chain.joint().assumptions.clone();
+    // The cone presses as if nothing lay between the plates, so it assumes no modulus.
+    all.retain(|each| chain.knows_the_gap() || each.field != "filler.modulus");
     all.push(Assumption {
         field: "service.temperature".to_owned(),
         value: "properties at the mean sink surface".to_owned(),

@@ -1,5 +1,8 @@
 //! Cautions and codes: each explained, each produced somewhere, each told once.
 
+#[path = "cautions/elastic.rs"]
+mod elastic;
+
 use std::{
     collections::BTreeSet,
     fmt::Write,

@@ -49,6 +49,8 @@ struct RawFiller {
     thickness: Option<RawDatum>,
     #[serde(rename = "thinnest_um")]
     thinnest: Option<RawDatum>,
+    #[serde(rename = "modulus_MPa")]
+    modulus: Option<RawDatum>,
     #[serde(rename = "at_zero_cm2K_W")]
     at_zero: Option<RawDatum>,
     #[serde(rename = "points_kPa_cm2K_W", default)]
@@ -106,6 +108,10 @@ fn checked(raw: &RawFiller, sources: &Sources) -> Result<FillerRecord, CatalogFa
         let what = "a paste needs yield stress, thinnest and applied thickness";
         return Err(CatalogFault::new(&raw.name, what));
     }
+    if raw.modulus.is_some() && (raw.model != RawModel::Layer || raw.thickness.is_none()) {
+        let what = "a modulus belongs to a layer of known thickness";
+        return Err(CatalogFault::new(&raw.name, what));
+    }
     Ok(FillerRecord {
         name: raw.name.clone(),
         aliases: raw.aliases.clone(),
@@ -119,6 +125,7 @@ fn checked(raw: &RawFiller, sources: &Sources) -> Result<FillerRecord, CatalogFa
         yield_stress: values.maybe(raw.yield_stress.as_ref(), 1.0)?,
         thickness: values.maybe(raw.thickness.as_ref(), 1e-6)?,
         thinnest: values.maybe(raw.thinnest.as_ref(), 1e-6)?,
+        modulus: values.maybe(raw.modulus.as_ref(), 1e6)?,
         points,
         creeps: raw.creeps,
         silicone: raw.silicone,

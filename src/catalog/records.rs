@@ -269,6 +269,8 @@ pub struct FillerRecord {
     pub thickness: Option<Datum>,
     /// Thinnest bond line of a paste: its largest particles, m.
     pub thinnest: Option<Datum>,
+    /// Modulus of a layer under pressure over its whole face, Pa.
+    pub modulus: Option<Datum>,
     /// (pressure, Pa; area resistance, m² K/W).
     pub points: Vec<(f64, f64)>,
     /// Whether it creeps so that bolts need tightening again.

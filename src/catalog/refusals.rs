@@ -165,6 +165,12 @@ fn numbers_that_cannot_be_are_refused() {
     assert_eq!(swapped("temperatures_K = [", "temperatures_K = [9"), 2);
     assert_eq!(set("points_kPa_cm2K_W", "[[70, 4], [60, 3]]"), 1);
     assert_eq!(set("points_kPa_cm2K_W", "[[70, 4], [350, 5]]"), 1);
+    // The first filler is a fluid, which has no modulus.
+    let modulus = r#"modulus_MPa = { value = 2, status = "memory", source = "handbook" }"#;
+    assert_eq!(
+        swapped("creeps = false", &format!("{modulus}\ncreeps = false")),
+        1
+    );
     assert_eq!(
         swapped("contraction_percent = [0.4", "contraction_percent = [0.1"),
         1

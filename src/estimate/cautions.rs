@@ -1,6 +1,8 @@
 //! Every caution of an estimate, gathered along the chain and put in order of gravity.
 
+mod elastic;
 mod faces;
+mod feet;
 mod field;
 
 pub(super) use field::{FLATNESS_DECIDES, GAP_IGNORED};
@@ -11,7 +13,7 @@ use crate::{
     catalog,
     diagnostic::{Caution, registry},
     estimate::{
-        CaseResult, Chain, Failure, Realisation, State, chain::error_caution, group_label, surfaces,
+        CaseResult, Chain, Failure, Realisation, State, chain::LARGE_ERROR, group_label, surfaces,
     },
     joint::{FillerKind, Joint, Medium, Sink},
     preload,
@@ -34,10 +36,10 @@ pub fn gathered(chain: &Chain, cases: &[CaseResult]) -> Result<Vec<Caution>, Fai
     let state = chain.state(0, &Realisation::default())?;
     let mut found = Vec::new();
     found.extend(preload_cautions(chain));
-    found.extend(field::field_cautions(chain));
+    found.extend(field::field_cautions(chain, cases));
     found.extend(faces::conductance_cautions(joint, &state, cases));
     found.extend(faces::material_cautions(joint));
-    found.extend(resistance_cautions(joint, &state, cases));
+    found.extend(resistance_cautions(chain, &state, cases));
     found.extend(service_cautions(chain, cases)?);
     let mut told: Vec<Caution> = Vec::new();
     for caution in found {
@@ -93,13 +95,29 @@ fn preload_cautions(chain: &Chain) -> Vec<Caution> {
     found
 }
 
-fn resistance_cautions(joint: &Joint, state: &State, cases: &[CaseResult]) -> Vec<Caution> {
+/// A word on a numerical error that is larger than it should be.
+fn error_caution(chain: &Chain, error: f64) -> Option<Caution> {
+    (error > LARGE_ERROR).then(|| {
+        let percent = 100.0 * error;
+        let text = if chain.cells().is_some() {
+            format!(
+                "the plan grid is coarse for these bolts or for so small a heated zone: source to sink may be \
+                 {percent:.0} % off"
+            )
+        } else {
+            format!(
+                "the {} grid is coarse for this joint: on the next coarser one source to sink differs by {percent:.0} %; \
+                 a finer --resolution tells more",
+                chain.resolution_name()
+            )
+        };
+        caution("resistance/grid-error", text)
+    })
+}
+
+/// What the plan grid of the closed-form field leaves out.
+fn plan_grid_cautions(joint: &Joint, cases: &[CaseResult]) -> Vec<Caution> {
     let mut found = Vec::new();
-    found.extend(
-        cases
-            .first()
-            .and_then(|case| error_caution(case.numerical_error)),
-    );
     if cases
         .first()
         .is_some_and(|case| case.resistance_upper.is_none())
@@ -119,6 +137,19 @@ fn resistance_cautions(joint: &Joint, state: &State, cases: &[CaseResult]) -> Ve
                 joint.cold().name
             ),
         ));
+    }
+    found
+}
+
+fn resistance_cautions(chain: &Chain, state: &State, cases: &[CaseResult]) -> Vec<Caution> {
+    let mut found = Vec::new();
+    found.extend(
+        cases
+            .first()
+            .and_then(|case| error_caution(chain, case.numerical_error)),
+    );
+    if chain.cells().is_some() {
+        found.extend(plan_grid_cautions(chain.joint(), cases));
     }
     if let Some(case) = cases.first() {
         let contact = case.results.contact.resistance.nominal;

@@ -7,7 +7,7 @@ mod form;
 mod geometry;
 mod levels;
 
-pub(super) use levels::error_caution;
+pub(super) use levels::LARGE_ERROR;
 
 use std::borrow::Cow;
 
@@ -62,6 +62,15 @@ pub struct Meeting {
     pub pressure: f64,
     /// Gap beside the contact, m; none where the field knows none.
     pub gap: Option<f64>,
+}
+
+/// Contact at an edge.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub(super) struct PressedEdge {
+    /// Place in joint coordinates, m.
+    pub(super) at: [f64; 2],
+    /// Highest pressure along the edges, Pa.
+    pub(super) pressure: f64,
 }
 
 impl<'a> Chain<'a> {
@@ -329,6 +338,15 @@ impl<'a> Chain<'a> {
     /// Fastener groups with their preparation.
     pub(super) fn groups(&self) -> impl Iterator<Item = (&Fastener, &Group)> {
         self.joint.fasteners.iter().zip(&self.groups)
+    }
+
+    /// Where the contact of a case reaches an edge of plate or foot; the closed-form field is cut
+    /// there and knows nothing of it.
+    pub(super) fn pressed_edge(&self, case: usize) -> Option<PressedEdge> {
+        match &self.model {
+            Model::Cone(_) => None,
+            Model::Elastic(model) => model.pressed_edge(self.joint(), case),
+        }
     }
 
     /// Cautions of the closed-form field that do not depend on the force.

@@ -395,8 +395,10 @@ pub struct Filler {
     /// Factor by which its resistance may be off either way, one standard deviation.
     pub factor: f64,
     /// Modulus of a layer under pressure over its whole face, Pa; none where it is not known or
-    /// the filler flows.
+    /// the filler flows. What it stands for: [`Filler::stiffness`].
     pub modulus: Option<f64>,
+    /// Thickness of a layer in the joint, m; none for what flows and for a table of one's own.
+    pub thickness: Option<f64>,
 }
 
 impl Filler {
@@ -404,12 +406,28 @@ impl Filler {
     /// and where no modulus is known.
     ///
     /// ```text
-    /// κ = E/t
+    /// κ = M/t        M = E (1 − ν)/((1 + ν)(1 − 2ν)) where it cannot bulge,   M ≈ E where it can
     /// ```
+    ///
+    /// | symbol | quantity | SI unit | field |
+    /// |---|---|---|---|
+    /// | `M` | modulus under pressure over the whole face | Pa | `modulus` |
+    /// | `t` | thickness in the joint | m | `thickness` |
+    /// | `E`, `ν` | Young's modulus and Poisson's ratio of the layer | Pa, 1 | |
+    ///
+    /// A thin wide layer between plates that hold its faces cannot bulge: a foamed or porous one
+    /// (ν near 0) then keeps `M = E`, rubber (ν near 0.5) becomes stiff by its bulk modulus. The
+    /// layer is a bed of springs that do not pull: beside the pressed part the faces lift off it.
+    ///
+    /// Valid: closure small against `t`; a modulus of first loading, the secant to the pressure met.
+    /// Source: elasticity of one-sided strain, textbook form.
+    /// Checked: `a_layer_of_known_modulus_is_a_bed_of_springs`.
     pub fn stiffness(&self) -> Option<f64> {
         match self.kind {
-            FillerKind::Layer { thickness, .. } => Some(self.modulus? / thickness),
-            FillerKind::Fluid { .. } | FillerKind::Paste { .. } | FillerKind::Table { .. } => None,
+            FillerKind::Layer { .. } | FillerKind::Table { .. } => {
+                Some(self.modulus? / self.thickness?)
+            }
+            FillerKind::Fluid { .. } | FillerKind::Paste { .. } => None,
         }
     }
 }

@@ -49,6 +49,7 @@ pub(super) fn read(file: &Record, collector: &mut Collector) -> Option<Option<Fi
     }
     let kind = kind(record, known, collector)?;
     let default = SCATTER[usize::from(known.is_none())];
+    let spring = layer::spring(record, (known, &kind), collector)?;
     Some(Some(Filler {
         name: known.map_or_else(
             || name.unwrap_or("filler").to_owned(),
@@ -56,7 +57,8 @@ pub(super) fn read(file: &Record, collector: &mut Collector) -> Option<Option<Fi
         ),
         kind,
         factor: 1.0 + scatter(record, default, collector)?,
-        modulus: None,
+        modulus: spring.modulus,
+        thickness: spring.thickness,
     }))
 }
 

@@ -113,3 +113,56 @@ fn losses_not_asked_for_are_an_assumption() {
         None
     );
 }
+
+#[test]
+fn a_layer_of_known_modulus_is_a_bed_of_springs() {
+    let filler = |lines: &str| {
+        read(&format!("{}\n[filler]\n{lines}\n", plain()))
+            .filler
+            .expect("a filler is stated")
+    };
+    let stiffness = |lines: &str| filler(lines).stiffness();
+    let close = |lines: &str, expected: f64| {
+        let found = stiffness(lines);
+        assert!(
+            found.is_some_and(|found| near(found, expected)),
+            "{lines}: {found:?}"
+        );
+    };
+    // κ = M/t by hand.
+    let own = "conductivity = \"3 W/(m·K)\"\nthickness = \"0.5 mm\"";
+    close(&format!("{own}\nmodulus = \"2 MPa\""), 4e9);
+    assert_eq!(stiffness(own), None, "no modulus, no spring");
+    // Catalogue pads press by their own modulus over the thickness stated or supplied.
+    close("name = \"gap pad\"", 0.5e6 / 1e-3);
+    close("name = \"gap pad\"\nthickness = \"2 mm\"", 0.5e6 / 2e-3);
+    close("name = \"gap pad\"\nmodulus = \"0.2 MPa\"", 0.2e6 / 1e-3);
+    close("name = \"graphite foil\"", 50e6 / 130e-6);
+    close(
+        "name = \"filled grease\"\nbond_line = \"50 µm\"\nmodulus = \"1 GPa\"",
+        1e9 / 50e-6,
+    );
+    // Indium flows plastically, pastes and fluids flow away, and a table knows no thickness.
+    for soft in [
+        "name = \"indium foil\"",
+        "name = \"filled grease\"",
+        "name = \"silicone oil\"",
+        "name = \"gap pad\"\ntable = [[\"0 Pa\", \"1 K·cm²/W\"]]",
+    ] {
+        assert_eq!(stiffness(soft), None, "{soft}");
+    }
+}
+
+#[test]
+fn a_modulus_of_the_catalogue_is_an_assumption_and_a_stated_one_is_none() {
+    let assumed = |lines: &str| {
+        let joint = read(&format!("{}\n[filler]\n{lines}\n", plain()));
+        let mut all = joint.assumptions.into_iter();
+        all.find(|assumption| assumption.field == "filler.modulus")
+    };
+    let told = assumed("name = \"gap pad\"").expect("taken from the catalogue");
+    assert_eq!(told.value, "500 kPa");
+    assert!(told.why.starts_with("catalogue value"), "{told:?}");
+    assert_eq!(assumed("name = \"gap pad\"\nmodulus = \"0.2 MPa\""), None);
+    assert_eq!(assumed("name = \"indium foil\""), None);
+}

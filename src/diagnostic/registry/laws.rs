@@ -111,7 +111,59 @@ pub(super) const ENTRIES: &[Entry] = &[
              to zero there. No fixed angle is right: from head edge to contact edge it is 16 to 24° \
              up to a thickness of 0.8 b, 32° at 2 b and 39° at 4 b. The 45° of old texts belongs to \
              glued plates. a is the hole radius, t_e the effective thickness of unequal plates.",
-            "A half-angle of your own or the angle of VDI 2230 can be chosen for comparison.",
+            "A half-angle of your own or the angle of VDI 2230 can be chosen for comparison. The field \
+             solved for the whole joint is `law/elastic-contact`.",
+        ],
+    ),
+    Law {
+        equation: "J(u) = ½ uᵀK u − fᵀu + Σ w_i ½ κ ⟨−g_i⟩² → least,   g = g₀ + w_upper − w_lower,   p = κ ⟨−g⟩;   \
+                   bare faces: κ = 10¹⁵ Pa/m;   layer: κ = M/t, M = E(1 − ν)/((1 + ν)(1 − 2ν)) where it cannot \
+                   bulge, ≈ E where it can",
+        range: "linear elasticity, small displacements, first loading; pressures below the yield of the \
+                plates, closure of a layer below half of its thickness; faces slide freely or stick where \
+                they touch",
+        source: "semismooth Newton steps are those of a primal-dual active set: Hintermüller, Ito and \
+                 Kunisch 2003, SIAM J. Optim. 13, 865-888; columns and grid are a construction of this \
+                 program, checked against solutions in three dimensions made for it",
+    }
+    .entry(
+        "law/elastic-contact",
+        "Elastic contact of the whole joint",
+        [
+            "Plates, feet and ribs are solid bodies on a grid of columns, clamped by heads, nuts and \
+             threads. Faces press and never pull: where the gap g would be negative they touch with \
+             pressure p, elsewhere they stand apart. ⟨x⟩ is x where positive and 0 elsewhere, g₀ the gap \
+             before any force, w the deflection of each face and w_i the area of a column. Between flat \
+             faces the contact does not grow with the force, and pressure and gap follow it in \
+             proportion. A filler of known modulus M and thickness t is a bed of springs that does \
+             not pull; pastes and fluids flow away and leave bare faces.",
+            "`--field elastic` takes it; `--resolution` sets the grid. Radii that hold a share of the \
+             force converge best, the contact area slowest. Heads that press uniformly or as rigid \
+             bodies, sliding or stuck faces and hard or yielding asperities are choices of `[contact]`; the \
+             other choice enters low and high.",
+        ],
+    ),
+    Law {
+        equation: "g₀ = Σ over both faces;   bow: |h| (r/R)² convex, h (1 − (r/R)²) concave;   map: highest − \
+                   height(x, y);   sag: bow of height κ R²/2, κ = ±α q″/k or \
+                   6 (α₂ − α₁) ΔT (1 + m)²/(t [3 (1 + m)² + (1 + mn)(m² + 1/(mn))])",
+        range: "smooth shapes, small against the plate; sag of plates free to bend, at room-temperature \
+                data; a shift or a tilt of a whole plate is no gap",
+        source: "bow: definition of this program; flux: even gradient in a free plate; bimetal: Timoshenko \
+                 1925, from memory",
+    }
+    .entry(
+        "law/initial-gap",
+        "Faces that are not flat before they are bolted",
+        [
+            "Bow, flatness map and thermal sag of both faces add to the gap that the bolts have to \
+             close. r is the distance from the centre of the outline, R half its diagonal (of a disc \
+             its radius), h the height of the bow; κ is a curvature, positive where the faying face \
+             is hollow. A heat flux q″ hollows the warm plate and domes the cold one; a second layer \
+             (index 2; m = t₁/t₂, n = E₁/E₂, t = t₁ + t₂) bends its plate when the temperature changes by ΔT. \
+             With such a gap contact grows with the force, so every force is solved anew.",
+            "State `bow`, `flatness_map` or `sag` of a plate. `flatness` alone has no shape: nominal is \
+             flat, low and high take it as a bow either way. The cone knows none of this.",
         ],
     ),
     Law {
@@ -335,7 +387,30 @@ pub(super) const ENTRIES: &[Entry] = &[
              through the local conductance and the thickness terms. Each bolt's cell, the part of \
              the plates nearer to it than to any other bolt, is cut into rings for the ring sum and \
              for the draws; the draws follow the cells and stand on the grid.",
-            "See `resistance/cell` for what it leaves out.",
+            "See `resistance/cell` for what it leaves out, and `law/conduction` for the plates in full.",
+        ],
+    ),
+    Law {
+        equation: "∇·(k ∇T) = 0 in every plate;   q = h(p, g) (T_upper − T_lower) where they meet;   \
+                   k ∂T/∂n = heat flux at the source, film or fixed temperature at the sink",
+        range: "steady; one conductivity for each plate in each case; no heat through sides and holes but \
+                where a source, a sink or a bolt says so",
+        source: "Fourier's law; polynomials through every layer on the columns of the contact are a \
+                 construction of this program, checked against exact solutions and against solutions in \
+                 three dimensions made for it",
+    }
+    .entry(
+        "law/conduction",
+        "Heat through the whole joint in three dimensions",
+        [
+            "With the elastic field heat runs through the plates on the columns that carry their \
+             contact. Each piece of the faces conducts by its own pressure p, or by its own gap g where it \
+             stands open: spots, gas, radiation, filler and film as their laws tell. Perfect contact is \
+             the same plates with one temperature on both sides wherever the faces could touch. Bolts join \
+             the seats of head and nut or thread as strands.",
+            "The error told is the difference to the next coarser grid. A small heated zone, an edge \
+             that is cooled, feet and ribs are part of the solution, and no rule of the plan grid \
+             (`law/cell`) is used.",
         ],
     ),
 ];

@@ -2,7 +2,7 @@
 
 use crate::diagnostic::registry::{
     Entry,
-    Gravity::{Grave, Range},
+    Gravity::{Grave, Note, Range},
     fault,
 };
 
@@ -121,7 +121,7 @@ pub(super) const ENTRIES: &[Entry] = &[
              as near to each other as their roughness allows everywhere. On the reference joints in \
              air the true joint added 1.4 and 1.8 times what the closed gap gives.",
             "Take the upper end of the band for a hot case, fill the joint, or solve the contact of \
-             the whole joint.",
+             the whole joint with `--field elastic`.",
         ],
     ),
     Grave.entry(
@@ -132,7 +132,7 @@ pub(super) const ENTRIES: &[Entry] = &[
              thickness (judgement). It then decides where the faces touch and how thick the gap or \
              the filler is, and the cone, which takes the faces as flat, cannot tell.",
             "Measure and mend the faces, take a filler that is thicker than the gap, or solve the \
-             contact with the bow as initial gap. No requirement counts as met until then.",
+             contact with the bow as initial gap (`--field elastic`). No requirement counts as met until then.",
         ],
     ),
     Range.entry(
@@ -143,8 +143,83 @@ pub(super) const ENTRIES: &[Entry] = &[
              bolt, nothing between them. A pad, foil or paste is softer than the plates and carries \
              part of the force farther out. Where the filler's resistance falls with pressure the \
              faces between the bolts conduct better than told here.",
-            "Compare with the filler's value at the mean pressure, total force over the area; solve \
-             the contact with the layer's stiffness where it decides.",
+            "Compare with the filler's value at the mean pressure, total force over the area; where it \
+             decides, state the `modulus` of the layer and estimate with `--field elastic`.",
+        ],
+    ),
+    Range.entry(
+        "pressure/flatness-stays-open",
+        "The bolts do not close the faces",
+        [
+            "Bow, map, sag or stated flatness leaves a gap that is more than a quarter wider than that \
+             between flat faces (judgement). A known shape is part of the solved field and of its \
+             numbers. Flatness stated as a height alone has no shape: nominal takes flat faces, low \
+             and high take them convex and concave. Waves shorter than the plate and twist are in \
+             neither.",
+            "State the measured shape as `bow` or `flatness_map`. Stiffer bolts, a bolt in the middle, \
+             flatter faces or a filler thicker than the gap close it.",
+        ],
+    ),
+    Note.entry(
+        "pressure/contact-at-edge",
+        "Contact reaches an edge",
+        [
+            "The faces press each other at the edge of a plate, of a cut-out or of a foot. A sharp edge \
+             on a wider face presses like a punch: the elastic pressure there grows without end as \
+             the grid gets finer, and a real edge is chamfered, burred or yields. The force and the \
+             resistance hardly feel it; the peak pressure does.",
+            "Take the peak at the edge as no more than a sign; deburr and chamfer. Where the wider reach of \
+             the pressure would help, move the bolt inwards or widen the foot.",
+        ],
+    ),
+    Grave.entry(
+        "pressure/head-off-foot",
+        "A head or nut presses beside its foot",
+        [
+            "The plates touch on their feet alone, and less than nine tenths of a head's or nut's seat \
+             stand over one (judgement). The rest of the clamp force goes to the feet by bending the plate. \
+             That bending is in the pressure and the gap, but its stress is not checked, and the plates \
+             are taken never to meet beside the feet.",
+            "Put every bolt over a foot at least as wide as its washer. Where that cannot be, have the \
+             bending of the plate checked by a stress engineer.",
+        ],
+    ),
+    Range.entry(
+        "pressure/filler-rigid",
+        "A layer whose softness is not known",
+        [
+            "The layer conducts as told, but without a modulus it is taken to press like bare plates on \
+             each other. A soft layer moves pressure from the bolts to the places between them: with \
+             a gap pad under 4 mm plates from 7 to 42 mm from the bolt axes (95 % of the force, demo of \
+             the battery plate). A layer thin and stiff against its plates changes little.",
+            "State `modulus` under `[filler]`: the pressure over the strain of the layer pressed over its \
+             whole face, at about the pressure met. For metals that flow, such as indium, this is \
+             the best that can be told.",
+        ],
+    ),
+    Range.entry(
+        "pressure/elastic-limits",
+        "A plate is pressed beyond its yield",
+        [
+            "Faces, head or nut press on average or at the peak beyond the yield strength of a plate \
+             at nominal force. Yield begins inside the metal somewhat above that (about 1.1 to 1.6 times \
+             yield beneath a flat round seat, from memory) and at sharp edges below it. Where metal \
+             flows the pressure levels out, the contact widens a little, and the clamp force is lost as \
+             the seat beds in. The elastic field has none of this.",
+            "Wider washers, less force or a harder plate. Where the peak stands at an edge alone, see \
+             `pressure/contact-at-edge`.",
+        ],
+    ),
+    Grave.entry(
+        "pressure/layer-squeezed",
+        "The clamp force is too much for the layer",
+        [
+            "By its modulus the layer would close by more than half of its thickness (judgement), which \
+             no pad does as a spring: it stiffens, tears, is pressed out at the edge, or the plates meet \
+             at the bolts. The field takes it as soft all the way, so the pressure is told too even, and \
+             the thickness that conducts too thick at the bolts. A pressed pad may also no longer insulate.",
+            "Set the gap by stops or spacers, or use less force or a harder pad; state the modulus at the \
+             pressure that is met. An engineer checks the electrical insulation of what is squeezed.",
         ],
     ),
 ];

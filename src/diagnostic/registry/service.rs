@@ -87,7 +87,8 @@ pub(super) const ENTRIES: &[Entry] = &[
              two reference joints solved in three dimensions (four M5 and six M4, vacuum) source to \
              sink reads 6 and 10 % high; in gas the open gap, which is missing, matters more. Rings \
              and draws use each bolt's nearest-bolt cell, brought to the grid's level.",
-            "Good for design; where a few per cent or a gas gap decide, solve the whole joint.",
+            "Good for design; where a few per cent or a gas gap decide, solve the whole joint with \
+             `--field elastic`.",
         ],
     ),
     Range.entry(
@@ -104,14 +105,17 @@ pub(super) const ENTRIES: &[Entry] = &[
     ),
     Range.entry(
         "resistance/grid-error",
-        "The plan grid is coarse for this joint",
+        "The grid is coarse for this joint",
         [
-            "Lines of the plan grid run across the whole joint, and the number of its nodes is \
-             bounded so that an estimate takes seconds: thousands of bolts get a coarser grid than \
-             they should, which reads too high. Under a heated zone narrower than its plate is \
-             thick no grid helps, because plates are taken as sheets. The error told comes from \
-             grids with half of the lines.",
-            "Estimate a part of the joint that repeats, heated and cooled in proportion; a regular \
+            "The error told is the difference to a coarser grid, relative to source to sink, and it \
+             passes 5 %. With the cone, lines of the plan grid run across the whole joint, and the \
+             number of its nodes is bounded so that an estimate takes seconds: thousands of bolts get \
+             a coarser grid than they should, which reads too high. Under a heated zone narrower than \
+             its plate is thick no grid of this kind helps, because plates are taken as sheets. The \
+             elastic field conducts in three dimensions on lines that gather around the bolts; a small \
+             heated zone away from them leaves it coarse.",
+            "With the elastic field take a finer `--resolution`, with the cone `--field elastic`. Or \
+             estimate a part of the joint that repeats, heated and cooled in proportion; a regular \
              lattice needs one bolt with its share of both plates. Heat a wider zone, or solve the \
              spreading under a small one by itself.",
         ],

@@ -3,7 +3,11 @@
 use crate::{
     catalog,
     diagnostic::Caution,
-    estimate::{Chain, cautions::caution, group_label},
+    estimate::{
+        CaseResult, Chain,
+        cautions::{caution, elastic},
+        group_label,
+    },
     joint::{Engagement, Fastener, FillerKind, Joint, Medium, Zone},
     resistance::Cells,
 };
@@ -12,24 +16,34 @@ use crate::{
 /// and spread poorly between them (judgement).
 const WIDE_PITCH: f64 = 12.0;
 
-pub(super) fn field_cautions(chain: &Chain) -> Vec<Caution> {
+pub(super) fn field_cautions(chain: &Chain, cases: &[CaseResult]) -> Vec<Caution> {
     let joint = chain.joint();
     let mut found = match chain.cells() {
-        Some(cells) => cone_cautions(chain, cells),
-        None => Vec::new(),
+        Some(cells) => {
+            let mut found = cone_cautions(chain, cells);
+            found.extend(small_source(joint));
+            found
+        }
+        None => elastic::cautions(chain, cases),
     };
-    found.extend(small_source(joint));
     let thinnest = joint
         .plates
         .iter()
         .map(|plate| plate.thickness)
         .fold(f64::INFINITY, f64::min);
     if let Some(pitch) = widest_pitch(joint).filter(|pitch| *pitch > WIDE_PITCH * thinnest) {
+        let what = match cases.first().and_then(|case| case.pressure.gap_max) {
+            // Feet and bow open faces too; what is told is true of any cause.
+            Some(gap) => format!(
+                "the plates stand up to {:.3} µm apart, and heat must travel along them; the solved field has both",
+                gap * 1e6
+            ),
+            None => "between them the plates part, and heat must travel along them".to_owned(),
+        };
         found.push(caution(
             "pressure/thin-plate-wide-pitch",
             format!(
-                "bolts stand up to {:.0} mm apart on a {:.2} mm plate: between them the plates part, and heat must \
-                 travel along them",
+                "bolts stand up to {:.0} mm apart on a {:.2} mm plate: {what}",
                 pitch * 1e3,
                 thinnest * 1e3
             ),

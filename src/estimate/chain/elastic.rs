@@ -16,7 +16,7 @@ use crate::{
     conductance,
     estimate::{
         Chain, ConeBeside, Failure, Fineness, Meeting, PressureResult, Realisation, RingRow, Watch,
-        chain::{conditions::Conditions, form::with_form},
+        chain::{PressedEdge, conditions::Conditions, form::with_form},
     },
     joint::{Joint, Medium},
     resistance::Path,
@@ -158,6 +158,11 @@ impl ElasticModel {
     /// Radius of a bolt's contact, m.
     pub(super) fn contact_radius(&self, case: usize, bolt: usize) -> f64 {
         self.cases[case].solved.contact_radius(bolt)
+    }
+
+    /// Where the contact of a case reaches an edge of plate or foot.
+    pub(super) fn pressed_edge(&self, joint: &Joint, case: usize) -> Option<PressedEdge> {
+        self.cases[case].solved.pressed_edge(joint)
     }
 
     /// Area of the faying faces, beside feet included, m².

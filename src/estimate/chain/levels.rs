@@ -1,7 +1,6 @@
 //! The level of the plan grid, carried over to the cells case by case, and its error.
 
 use crate::{
-    diagnostic::Caution,
     estimate::{Chain, Failure, Realisation, State, chain::cone::ConeModel},
     resistance::{self, Calibration, Perfect},
 };
@@ -11,7 +10,7 @@ pub(super) const FINENESS: f64 = 0.6;
 /// Relative difference of conductivity below which two cases share a calibration.
 const ALIKE: f64 = 0.01;
 /// Numerical error above which the reader is told.
-const LARGE_ERROR: f64 = 0.05;
+pub const LARGE_ERROR: f64 = 0.05;
 
 /// What the plan grid makes of the cells' answer in one case.
 #[derive(Clone, Debug)]
@@ -110,15 +109,4 @@ impl ConeModel {
             }))
         }
     }
-}
-
-/// A word on a numerical error that is larger than it should be.
-pub fn error_caution(error: f64) -> Option<Caution> {
-    (error > LARGE_ERROR).then(|| Caution {
-        code: "resistance/grid-error",
-        text: format!(
-            "the plan grid is coarse for these bolts or for so small a heated zone: source to sink may be {:.0} % off",
-            100.0 * error
-        ),
-    })
 }

@@ -4,7 +4,7 @@ use crate::{
     catalog::FillerRecord,
     joint::{
         FillerKind,
-        collector::Collector,
+        collector::{Collector, Wording, fault},
         filler::{conductivity, line},
         plates::two_ways,
         record::Record,
@@ -118,4 +118,79 @@ fn measured_layer(
     Some(FillerKind::Table {
         points: points.collect(),
     })
+}
+
+/// What a layer is as a bed of springs.
+#[derive(Clone, Copy, Debug, Default)]
+pub(super) struct Spring {
+    /// Modulus under pressure over the whole face, Pa.
+    pub(super) modulus: Option<f64>,
+    /// Thickness in the joint, m.
+    pub(super) thickness: Option<f64>,
+}
+
+/// Reads the modulus of a layer; none when it is faulty or stated of what is no layer.
+pub(super) fn spring(
+    record: &Record,
+    (known, kind): (Option<&FillerRecord>, &FillerKind),
+    collector: &mut Collector,
+) -> Option<Spring> {
+    let thickness = match kind {
+        FillerKind::Layer { thickness, .. } => Some(*thickness),
+        FillerKind::Table { .. } if !record.has("table") => record
+            .number("bond_line")
+            .or_else(|| record.number("thickness"))
+            .or_else(|| known?.thickness.as_ref().map(|supplied| supplied.value)),
+        _ => None,
+    };
+    if thickness.is_none() {
+        if record.has("modulus") {
+            collector.report(no_layer(record, kind));
+            return None;
+        }
+        return Some(Spring::default());
+    }
+    let modulus = match record.number("modulus") {
+        None if record.has("modulus") => return None,
+        None => {
+            let datum = known.and_then(|known| known.modulus.as_ref());
+            if let Some(datum) = datum {
+                collector.assume(
+                    record.at("modulus"),
+                    units::show(datum.value, Quantity::Pressure),
+                    format!("catalogue value: {}", datum.source),
+                );
+            }
+            datum.map(|datum| datum.value)
+        }
+        stated => stated,
+    };
+    Some(Spring { modulus, thickness })
+}
+
+/// A modulus of something that is no layer.
+fn no_layer(record: &Record, kind: &FillerKind) -> crate::diagnostic::Fault {
+    let (what, help) = match kind {
+        FillerKind::Table { .. } => (
+            "a table of your own",
+            "a table tells no thickness; describe a pad that spreads the load by `model = \"layer\"` with \
+             `conductivity`, `thickness` and `modulus`",
+        ),
+        FillerKind::Paste { .. } => (
+            "a paste",
+            "a paste flows away from the load and does not spread it: leave `modulus` out; for a cured layer state \
+             its `bond_line`",
+        ),
+        _ => (
+            "a fluid",
+            "a fluid flows away from the load and does not spread it: leave `modulus` out",
+        ),
+    };
+    fault(
+        "file/conflict",
+        &record.span("modulus"),
+        format!("`modulus` is stated of {what}"),
+    )
+    .expecting("only a layer has a modulus")
+    .help(help)
 }

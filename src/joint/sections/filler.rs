@@ -63,6 +63,13 @@ pub static FILLER: Section = Section {
         .within(0.0, 1.0)
         .default("0"),
         field(
+            "modulus",
+            Kind::Quantity(Quantity::Pressure),
+            "pressure over strain of a layer pressed over its whole face; it then spreads an elastic field",
+            "\"2 MPa\"",
+        )
+        .within(1e3, 1e12),
+        field(
             "table",
             Kind::Pairs([Quantity::Pressure, Quantity::AreaResistance]),
             "area resistance against pressure, pressure rising",

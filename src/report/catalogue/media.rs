@@ -71,6 +71,7 @@ pub fn fillers(records: &[FillerRecord]) -> Listing {
             words("model"),
             numbers("k\nW/(m·K)"),
             numbers("thickness\nµm"),
+            numbers("modulus\nMPa"),
             words("mind"),
         ],
         items: records
@@ -92,6 +93,7 @@ pub fn fillers(records: &[FillerRecord]) -> Listing {
                         record.model.clone(),
                         shown(&record.conductivity, 1.0),
                         shown_if(record.thickness.as_ref(), 1e-6),
+                        shown_if(record.modulus.as_ref(), 1e6),
                         mind.join(", "),
                     ],
                     keywords: record.aliases.join("|"),
@@ -103,6 +105,7 @@ pub fn fillers(records: &[FillerRecord]) -> Listing {
                         "yield_stress": datum_if(record.yield_stress.as_ref()),
                         "thickness": datum_if(record.thickness.as_ref()),
                         "thinnest": datum_if(record.thinnest.as_ref()),
+                        "modulus": datum_if(record.modulus.as_ref()),
                         "points": record.points,
                         "creeps": record.creeps,
                         "silicone": record.silicone,

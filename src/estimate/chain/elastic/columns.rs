@@ -1,6 +1,7 @@
 //! Contact and heat of any joint on columns: the whole plates in three dimensions.
 
 mod bank;
+mod edges;
 mod heat;
 mod problem;
 mod readings;

@@ -6,6 +6,7 @@ use crate::{
     estimate::{
         ConeBeside, Failure, Flatness, Meeting, PressureResult, RingRow,
         chain::{
+            PressedEdge,
             conditions::Conditions,
             elastic::{level::Level, variant::Variant},
         },
@@ -85,6 +86,10 @@ pub(super) trait Solved: Debug + Send + Sync {
 
     /// The field as the reader gets it, with what becomes of flatness and the cone beside it.
     fn pressure(&self, flatness: Flatness, cone: Option<ConeBeside>) -> PressureResult;
+
+    /// Where the contact reaches an edge of plate or foot, holes not looked at; the place of the
+    /// highest pressure there.
+    fn pressed_edge(&self, joint: &Joint) -> Option<PressedEdge>;
 
     /// Error of the heat that a coarser level does not tell, relative to source to sink.
     fn heat_error(&self) -> f64;

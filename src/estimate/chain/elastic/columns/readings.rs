@@ -3,10 +3,13 @@
 use crate::{
     estimate::{
         ConeBeside, Flatness, Meeting, PressureResult, RingRow, SolvedField, SolverHealth,
-        chain::elastic::{
-            columns::OnColumns,
-            rings::{Sum, edges, rows},
-            solver::Solved,
+        chain::{
+            PressedEdge,
+            elastic::{
+                columns::{OnColumns, edges::pressed_edge},
+                rings::{Sum, edges, rows},
+                solver::Solved,
+            },
         },
     },
     joint::Joint,
@@ -77,6 +80,10 @@ impl Solved for OnColumns {
     /// None: the level moves the grid of contact and heat alike.
     fn heat_error(&self) -> f64 {
         0.0
+    }
+
+    fn pressed_edge(&self, joint: &Joint) -> Option<PressedEdge> {
+        pressed_edge(joint, &self.field)
     }
 
     fn met_at(&self, point: [f64; 2]) -> Option<Meeting> {

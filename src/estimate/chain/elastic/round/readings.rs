@@ -5,12 +5,16 @@ use std::f64::consts::PI;
 use crate::{
     estimate::{
         ConeBeside, Flatness, Meeting, PressureResult, RingRow, SolvedField, SolverHealth,
-        chain::elastic::{
-            rings::{Sum, edges, rows},
-            round::{InRound, shape::Shape},
-            solver::Solved,
+        chain::{
+            PressedEdge,
+            elastic::{
+                rings::{Sum, edges, rows},
+                round::{InRound, shape::Shape},
+                solver::Solved,
+            },
         },
     },
+    joint::Joint,
     numerics::elements::edge_points,
     pressure::round::Solution,
     resistance::Path,
@@ -80,6 +84,16 @@ impl Solved for InRound {
     /// A level moves the grid of the contact alone; the heat holds itself against twice the spacing.
     fn heat_error(&self) -> f64 {
         self.health.coarser_grid.abs()
+    }
+
+    /// Contact that fills the plates ends at their rim.
+    fn pressed_edge(&self, _: &Joint) -> Option<PressedEdge> {
+        let rim = self.shape.rim_radius;
+        let pressure = self.contact.pressure(rim * (1.0 - 1e-9), self.force);
+        (pressure > 0.0).then_some(PressedEdge {
+            at: [self.shape.at[0] + rim, self.shape.at[1]],
+            pressure,
+        })
     }
 }
 
