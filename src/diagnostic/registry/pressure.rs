@@ -190,8 +190,8 @@ pub(super) const ENTRIES: &[Entry] = &[
         [
             "The layer conducts as told, but without a modulus it is taken to press like bare plates on \
              each other. A soft layer moves pressure from the bolts to the places between them: with \
-             a gap pad under 4 mm plates from 7 to 42 mm from the bolt axes (95 % of the force, demo of \
-             the battery plate). A layer thin and stiff against its plates changes little.",
+             a gap pad on a plate of 4 mm 95 % of the force reached to 42 mm from the bolt axes, by the cone \
+             of bare plates to 7 mm (demo of the battery plate). A layer thin and stiff against its plates changes little.",
             "State `modulus` under `[filler]`: the pressure over the strain of the layer pressed over its \
              whole face, at about the pressure met. For metals that flow, such as indium, this is \
              the best that can be told.",
