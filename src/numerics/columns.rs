@@ -71,4 +71,6 @@ pub(crate) use form::{LANES, MOST_STENCILS, Square};
 pub(crate) use kernel::{Coupling, Matrix, Neighbour};
 
 #[cfg(test)]
+mod bending;
+#[cfg(test)]
 mod tests;

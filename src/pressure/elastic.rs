@@ -97,14 +97,14 @@ pub fn size(problem: &Problem) -> Result<Size, Failure> {
 /// Checked: `layout_cases_are_met_when_fine`, `one_bolt_presses_as_in_a_round_pair` and the rest of
 /// `tests/validation_columns.rs`.
 pub fn solve(problem: &Problem) -> Result<Field, Failure> {
-    solve_started(problem, Start::Bolts)
+    solve_started(problem, &Start::Bolts)
 }
 
 /// Solves the contact from where a field of the same grid stood: other forces, other gaps.
 ///
 /// A field of another grid is no help and no harm.
 pub fn solve_from(problem: &Problem, previous: &Field) -> Result<Field, Failure> {
-    solve_started(problem, Start::Field(previous))
+    solve_started(problem, &Start::Field(previous))
 }
 
 /// Solves the contact from a stated set of touching columns, the same for every interface.
@@ -114,10 +114,10 @@ pub fn solve_from_set(
     problem: &Problem,
     touches: &(dyn Fn([f64; 2]) -> bool + Sync),
 ) -> Result<Field, Failure> {
-    solve_started(problem, Start::Set(touches))
+    solve_started(problem, &Start::Set(touches))
 }
 
-fn solve_started(problem: &Problem, start: Start) -> Result<Field, Failure> {
+fn solve_started(problem: &Problem, start: &Start) -> Result<Field, Failure> {
     check::sound(problem)?;
     let plan = resolution::plan(problem)?;
     let size = resolution::size(problem, &plan);

@@ -103,7 +103,8 @@ fn a_symmetric_joint_has_a_symmetric_field() {
     }
 }
 
-// The same unknowns in millimetres, newtons and megapascals; 1e-6 as residuals go.
+// The same joint in millimetres, newtons and megapascals; 1e-4: single precision rounds differently, so that
+// the steps stop at other residuals; a hidden length or modulus would show as a factor.
 #[test]
 fn units_do_not_matter() {
     let soft = Compliance::Layer { stiffness: 1e14 };
@@ -130,7 +131,7 @@ fn units_do_not_matter() {
     let factors = [1e3, 1e3, 1e-6, 1e3, 1e6];
     let pairs = readings(&metres).into_iter().zip(readings(&millimetres));
     for ((a, b), factor) in pairs.zip(factors) {
-        assert!((a * factor / b - 1.0).abs() < 1e-6, "{a} {b}");
+        assert!((a * factor / b - 1.0).abs() < 1e-4, "{a} {b}");
     }
 }
 

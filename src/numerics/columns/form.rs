@@ -34,8 +34,6 @@ pub trait Form: Copy + Send + Sync + 'static {
     const COMPONENTS: usize;
     /// Stencils kept.
     const STENCILS: usize;
-    /// Sums over neighbours.
-    const SUMS: usize;
     /// Component of the equation that each sum belongs to.
     const INTO: &'static [usize];
     /// All products.
@@ -79,9 +77,9 @@ const VV: usize = 1;
 const WW: usize = 2;
 const UV: usize = 3;
 const VU: usize = 4;
-const MASS: usize = 5;
-const MASS_X: usize = 6;
-const MASS_Y: usize = 7;
+pub(super) const MASS: usize = 5;
+pub(super) const MASS_X: usize = 6;
+pub(super) const MASS_Y: usize = 7;
 const X_VALUE: usize = 8;
 const VALUE_X: usize = 9;
 const Y_VALUE: usize = 10;
@@ -99,7 +97,6 @@ const fn term(sum: usize, into: usize, stencil: usize, from: usize) -> Term {
 impl Form for Solid {
     const COMPONENTS: usize = 3;
     const STENCILS: usize = 12;
-    const SUMS: usize = 12;
     const INTO: &'static [usize] = &[0, 0, 0, 0, 1, 1, 1, 1, 2, 2, 2, 2];
     const TERMS: &'static [Term] = &[
         term(0, 0, UU, 0),
@@ -205,7 +202,6 @@ pub struct Scalar {
 impl Form for Scalar {
     const COMPONENTS: usize = 1;
     const STENCILS: usize = 2;
-    const SUMS: usize = 2;
     const INTO: &'static [usize] = &[0, 0];
     const TERMS: &'static [Term] = &[term(0, 0, 0, 0), term(1, 0, 1, 0)];
 

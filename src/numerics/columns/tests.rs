@@ -133,12 +133,8 @@ fn a_linear_field_has_its_exact_energy() {
         operator.product(&field, &mut image);
         let energy = 0.5 * operator.dot(&field, &image);
         let trace: f64 = (0..3).map(|i| gradient[i][i]).sum();
-        let mut square = 0.0;
-        for i in 0..3 {
-            for j in 0..3 {
-                square += (0.5 * (gradient[i][j] + gradient[j][i])).powi(2);
-            }
-        }
+        let strain = |i: usize, j: usize| 0.5 * (gradient[i][j] + gradient[j][i]);
+        let square: f64 = (0..9).map(|at| strain(at / 3, at % 3).powi(2)).sum();
         let exact = volume * (0.5 * STEEL.first * trace * trace + STEEL.shear * square);
         assert!(
             (energy / exact - 1.0).abs() < 1e-12,

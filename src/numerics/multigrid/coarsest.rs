@@ -118,7 +118,7 @@ impl<F: Form> Coarsest<F> {
         let size = self.size();
         let mut ordered = vec![0.0; (self.links.len() + 1) * size];
         self.copy(values, &mut ordered, |value, own| {
-            own.copy_from_slice(value)
+            own.copy_from_slice(value);
         });
         for (link, factor) in self.links.iter().enumerate() {
             let part = &mut ordered[link * size..][..2 * size];
@@ -143,7 +143,7 @@ impl<F: Form> Coarsest<F> {
             }
         }
         self.copy(values, &mut ordered, |value, own| {
-            value.copy_from_slice(own)
+            value.copy_from_slice(own);
         });
     }
 

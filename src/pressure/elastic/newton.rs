@@ -55,9 +55,9 @@ struct Search<'a> {
 pub(super) fn solve(
     problem: &Problem,
     (mesh, mut system): (Mesh, System),
-    start: Start,
+    start: &Start,
 ) -> Result<Field, Failure> {
-    let previous = match &start {
+    let previous = match start {
         Start::Field(field) if field.mesh.plan == mesh.plan => Some(&field.state),
         _ => None,
     };
@@ -65,7 +65,7 @@ pub(super) fn solve(
         Some(state) if state.fits(&system.operator.zeros(), system.pairings.len()) => {
             state.active.clone()
         }
-        _ => first_set(problem, &mesh, &system, &start),
+        _ => first_set(problem, &mesh, &system, start),
     };
     let displacement = match previous {
         Some(state) if state.displacement.len() == system.load.len() => state.displacement.clone(),

@@ -133,7 +133,7 @@ pub enum Faces {
 /// What yields between two faces, as pressure over closure.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub enum Compliance {
-    /// Nothing: 10¹⁵ Pa/m, a tenth of a micrometre at 100 MPa.
+    /// Nothing: 1e15 Pa/m, so that 1e8 Pa close it by a tenth of a micrometre.
     Hard,
     /// Asperities under the mean contact pressure.
     Asperities {

@@ -210,12 +210,17 @@ impl Face<'_> {
     }
 
     /// Mean distance of the force from the nearest bolt axis, m.
+    ///
+    /// Forces stand on their columns, where the bodies feel them.
     pub fn mean_force_radius(&self) -> f64 {
         let (mut moment, mut whole) = (0.0, 0.0);
-        self.each_force(|place, force| {
-            moment += force * self.nearest_bolt(place).1;
-            whole += force;
-        });
+        for column in 0..self.plan().columns() {
+            let force = self.values.weight[column] * self.values.pressure[column];
+            if force > 0.0 {
+                moment += force * self.nearest_bolt(self.plan().place(column)).1;
+                whole += force;
+            }
+        }
         moment / whole
     }
 

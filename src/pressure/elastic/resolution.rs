@@ -50,11 +50,10 @@ impl Fineness {
         let several = ((thickness / ELEMENT).ceil() as usize).clamp(2, 8);
         let (elements, degree) = match self {
             Self::Coarse | Self::Fast if thickness <= THIN_AT_A_GLANCE => (1, 2),
-            Self::Coarse | Self::Fast if thickness <= ONE_ELEMENT => (1, 3),
-            Self::Coarse | Self::Fast => (several, 2),
-            Self::Normal if thickness <= ONE_ELEMENT => (1, 3),
-            Self::Fine if thickness <= THIN => (1, 3),
-            Self::Normal | Self::Fine => (several, 3),
+            Self::Coarse | Self::Fast if thickness > ONE_ELEMENT => (several, 2),
+            Self::Normal if thickness > ONE_ELEMENT => (several, 3),
+            Self::Fine if thickness > THIN => (several, 3),
+            _ => (1, 3),
         };
         Through { elements, degree }
     }
