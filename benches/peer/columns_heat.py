@@ -103,7 +103,7 @@ def main():
                     seconds.append(time.perf_counter() - start)
                     if seconds[-1] > 20:
                         break
-                row = {"name": f"{grid['fine']} {name}, {solver}", "resistance": resistance, "unknowns": unknowns, "seconds": seconds}
+                row = {"name": f"{grid['fine']} {name}, {solver}", "resistance": float(resistance), "unknowns": int(unknowns), "seconds": seconds}
                 if best is None or min(seconds) < min(best["seconds"]):
                     best = row
             rows.append(best)

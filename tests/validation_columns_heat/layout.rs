@@ -280,8 +280,9 @@ impl Profile {
 struct Worst {
     contact: f64,
     gas: f64,
-    resistance: f64,
-    hottest: f64,
+    /// In vacuum and in air.
+    resistance: [f64; 2],
+    hottest: [f64; 2],
     perfect: f64,
     edge: f64,
 }
@@ -316,15 +317,17 @@ impl Case {
                 };
                 [known.T_source_mean - sink, known.T_hot - sink].map(|rise| rise / known.Q_W)
             };
-            for (medium, heat) in [("vacuum", first), ("air", second)] {
+            for (index, (medium, heat)) in
+                [("vacuum", first), ("air", second)].into_iter().enumerate()
+            {
                 sound(&heat, &perfect);
                 let [resistance, hottest] = known(medium);
                 let off = [
                     heat.source_to_sink / resistance - 1.0,
                     heat.hottest.rise / hottest - 1.0,
                 ];
-                worst.resistance = worst.resistance.max(off[0].abs());
-                worst.hottest = worst.hottest.max(off[1].abs());
+                worst.resistance[index] = worst.resistance[index].max(off[0].abs());
+                worst.hottest[index] = worst.hottest[index].max(off[1].abs());
             }
             let off = perfect.source_to_sink / known("perfect")[0] - 1.0;
             if sink == "edge_x" {
@@ -391,8 +394,9 @@ fn gas(gap: f64) -> f64 {
 }
 
 // The file's fields are coarser than the contact: its pressure comes from forces in rings about each
-// bolt, which make it round. Errors of 1 to 2 % in vacuum, where all heat goes through the edge of
-// the contact, are those of this resampling; perfect contact, which needs no field, is met to 0.2 %.
+// bolt, which make it round and smear its edge by a third of a millimetre. In vacuum, where all heat
+// goes through that edge, this costs 1.2 to 2.5 %; with fields solved here it is below 1 %. In air it
+// is below 0.6 %, and perfect contact, which needs no field, is met to 0.3 %.
 #[test]
 fn layout_cases_are_met_with_the_reference_fields() {
     for name in ["i", "ii flat", "ii concave"] {
@@ -405,8 +409,10 @@ fn layout_cases_are_met_with_the_reference_fields() {
             assert!(worst.contact < 0.015, "{name} {}", worst.contact);
             // Measured 0.2 %: bilinear between points 2 mm apart.
             assert!(worst.gas < 0.005, "{name} {}", worst.gas);
-            assert!(worst.resistance < 0.025, "{name} {}", worst.resistance);
-            assert!(worst.hottest < 0.025, "{name} {}", worst.hottest);
+            for (index, bar) in [0.03, 0.01].into_iter().enumerate() {
+                let off = [worst.resistance[index], worst.hottest[index]];
+                assert!(off.iter().all(|off| *off < bar), "{name} {index} {off:?}");
+            }
             assert!(worst.perfect < perfect, "{name} {}", worst.perfect);
             // At the held edge heat turns into the lower plate within one wide cell.
             assert!(worst.edge < 0.012, "{name} {}", worst.edge);
@@ -437,8 +443,8 @@ fn layout_cases_are_met_with_own_fields() {
         ("ii concave", Fineness::Fast, 0.02, 0.01),
     ] {
         let worst = with_own_fields(name, fineness);
-        assert!(worst.resistance < bar, "{name} {}", worst.resistance);
-        assert!(worst.hottest < bar, "{name} {}", worst.hottest);
+        let off = [worst.resistance, worst.hottest];
+        assert!(off.iter().flatten().all(|off| *off < bar), "{name} {off:?}");
         assert!(worst.contact < contact, "{name} {}", worst.contact);
     }
 }
