@@ -1,5 +1,7 @@
 //! The command line: what it prints where, how it ends, what it leaves on disk.
 
+#[path = "cli/fields.rs"]
+mod fields;
 #[path = "cli/tables.rs"]
 mod tables;
 
@@ -252,27 +254,6 @@ fn standard_input_has_a_name_and_is_read_once() {
         .assert()
         .code(2)
         .stdout_eq("");
-}
-
-#[test]
-fn a_field_of_another_build_is_refused_with_those_of_this_one() {
-    let told = stderr(
-        &ringsum()
-            .args(["estimate", "x.toml", "--field", "elastic"])
-            .assert()
-            .code(2),
-    );
-    assert!(
-        told.contains("no elastic field") && told.contains("`cone`"),
-        "{told}"
-    );
-    let told = stderr(
-        &ringsum()
-            .args(["estimate", "x.toml", "--field", "magic"])
-            .assert()
-            .code(2),
-    );
-    assert!(told.contains("`cone`"), "{told}");
 }
 
 #[test]

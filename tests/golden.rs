@@ -5,7 +5,10 @@
 
 use std::{fs, path::Path};
 
-use ringsum::{estimate::Options, joint, report, uncertainty};
+use ringsum::{
+    estimate::{Chain, Choice, Fineness, Options, Watch},
+    joint, report, uncertainty,
+};
 
 /// Draws enough to show the band, few enough to be quick.
 const OPTIONS: Options = Options {
@@ -53,5 +56,42 @@ fn demo_joints_print_what_they_printed() {
         (10, 2),
         "ten demo joints for the cone, two beyond it"
     );
+    assert!(changed.is_empty(), "changed: {changed:#?}");
+}
+
+/// Demo joints on the solved field, with their draws.
+const SOLVED: [(&str, u32); 3] = [
+    ("converter_box", 256),
+    ("bowed_base", 0),
+    ("bracket_feet", 0),
+];
+
+#[test]
+fn solved_demo_joints_print_what_they_printed() {
+    let mut changed = Vec::new();
+    for (name, draws) in SOLVED {
+        let path = Path::new("joints").join(name).with_extension("toml");
+        let text = fs::read_to_string(&path).expect("a joint file is text");
+        let table = |name: &str| {
+            fs::read_to_string(Path::new("joints").join(name)).map_err(|fault| fault.to_string())
+        };
+        let joint = joint::read_with_files(&text, &[], &table)
+            .unwrap_or_else(|faults| panic!("{path:?}: {faults:#?}"));
+        let choice = Choice::elastic(Fineness::Fast, 1_000_000_000);
+        let chain = Chain::of(&joint, choice, &Watch::none()).expect("a demo joint is solved");
+        let options = Options { draws, ..OPTIONS };
+        let found = uncertainty::along(&chain, &options).expect("a demo joint has a number");
+        let printed = report::text::estimate(&found);
+        let golden = Path::new("tests/golden/elastic")
+            .join(name)
+            .with_extension("txt");
+        if std::env::var("SNAPSHOTS").is_ok_and(|value| value == "overwrite") {
+            fs::create_dir_all("tests/golden/elastic").expect("the folder can be made");
+            fs::write(&golden, &printed).expect("the golden file can be written");
+        }
+        if fs::read_to_string(&golden).ok().as_deref() != Some(printed.as_str()) {
+            changed.push(golden);
+        }
+    }
     assert!(changed.is_empty(), "changed: {changed:#?}");
 }

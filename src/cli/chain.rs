@@ -10,6 +10,7 @@ use crate::{
     },
     figures::{self, Drawing, Format},
     joint::Joint,
+    pressure::elastic::Failure as Contact,
     uncertainty::{self, SweepOptions},
     units::{self, Quantity},
 };
@@ -95,6 +96,12 @@ impl From<Failure> for Trouble {
                 help: Some(format!(
                     "estimate it with `--field elastic`; `ringsum explain {BEYOND_CONE}` tells more"
                 )),
+            },
+            Failure::Contact(Contact::TooLarge { .. }) => Self::Usage {
+                message: failure.to_string(),
+                help: Some(
+                    "allow more with `--memory \"2 GB\"`, or take `--resolution fast`".to_owned(),
+                ),
             },
             _ => Self::Failure(failure.to_string()),
         }

@@ -20,7 +20,7 @@ use std::{
 /// Cells across a map: finer than print shows.
 const COLUMNS: usize = 400;
 
-/// Draw pressure, local conductance and its growth around the bolts
+/// Draw pressure, gap (elastic field), local conductance and its growth around the bolts
 #[derive(Debug, Args)]
 pub struct Draw {
     /// Joint file; - reads standard input
