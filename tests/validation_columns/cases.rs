@@ -70,7 +70,6 @@ fn meets(plates: &Plates, (text, radius): (&str, f64), allowed: &Allowed) {
     let largest = field.gap_max() * 1e6 / wanted("gap_max_um") - 1.0;
     let pressure = pressure_miss(&field, &reference);
     let reach = field.mean_force_radius() / radius - 1.0;
-    println!("centre {gap:.4} largest {largest:.4} pressure {pressure:.4} radius {reach:.4}");
     assert!(gap.abs() < allowed.gap, "gap at the centre: {gap}");
     assert!(largest.abs() < allowed.gap, "largest gap: {largest}");
     assert!(pressure < allowed.pressure, "pressure: {pressure}");
@@ -122,13 +121,12 @@ fn layout_cases_are_nearly_met_when_fast() {
 // Cells of 1.5, 1, 0.75 and 0.5 mm with the same cubic polynomial: what is left shrinks.
 #[test]
 fn gap_and_force_radius_converge_with_the_grid() {
-    let found: Vec<[f64; 2]> = [
+    let found = [
         Fineness::Coarse,
         Fineness::Fast,
         Fineness::Normal,
         Fineness::Fine,
     ]
-    .into_iter()
     .map(|fineness| {
         let through = Some(Through {
             elements: 1,
@@ -140,19 +138,17 @@ fn gap_and_force_radius_converge_with_the_grid() {
         }
         .field();
         [centre(&field), field.mean_force_radius()]
-    })
-    .collect();
+    });
     println!("{found:?}");
     for reading in 0..2 {
-        let finest = found[3][reading];
-        let miss = |at: usize| (found[at][reading] / finest - 1.0).abs();
+        let at = |fineness: usize| found[fineness][reading];
+        let miss = |fineness: usize| (at(fineness) / at(3) - 1.0).abs();
         // Halving the spacing from 1.5 to 0.75 mm at least halves what is left; one bound for
         // rounding near a chance zero.
+        let (coarse, normal) = (miss(0), miss(2));
         assert!(
-            miss(2) < 0.5 * miss(0) + 0.002,
-            "{reading}: {} {}",
-            miss(0),
-            miss(2)
+            normal < 0.5 * coarse + 0.002,
+            "{reading}: {coarse} {normal}"
         );
     }
 }
@@ -230,9 +226,7 @@ fn a_rigid_head_changes_a_single_bolt_as_it_changes_a_round_pair() {
 
 /// Change of the gap at the centre against the plain joint.
 fn effect(plain: &Plates, changed: &Plates) -> f64 {
-    let effect = centre(&changed.field()) / centre(&plain.field()) - 1.0;
-    println!("{effect:.4}");
-    effect
+    centre(&changed.field()) / centre(&plain.field()) - 1.0
 }
 
 // Effects of the study at a fixed grid; tolerance a third of the effect. Its −10 % for a rigid head in
