@@ -13,6 +13,9 @@ use ringsum::pressure::elastic::{Field, Fineness, size, solve};
 
 const RUNS: usize = 3;
 
+/// Name and plates of a case.
+type Case = (&'static str, fn(Fineness) -> Plates);
+
 /// Sixteen M4 around 150 × 100 × 5 + 8 mm, bowed.
 fn sixteen(fineness: Fineness) -> Plates {
     let mut at = crossings(&[0.008, 0.0415, 0.075, 0.1085, 0.142], &[0.008, 0.092]);
@@ -28,17 +31,21 @@ fn sixteen(fineness: Fineness) -> Plates {
 }
 
 fn main() {
-    // A case by name alone, for a profile or its memory: `case_i`, `case_ii`, `sixteen`; and a fineness.
+    // A case by name alone, for a profile or its memory: `case_i`, `case_ii`, `sixteen`; a
+    // fineness; `once`.
     let only: Vec<String> = std::env::args()
         .skip(1)
         .filter(|word| !word.starts_with('-'))
         .collect();
+    if only.iter().any(|word| word == "once") {
+        return once(&only);
+    }
     println!(
         "{:8} {:7} {:>8} {:>5} {:>4} {:>8} {:>8} {:>7} {:>9} {:>8}  levels",
         "case", "", "unknowns", "steps", "CG", "1 thread", "2", "MB est.", "gap max", "p max"
     );
     let mut times = Vec::new();
-    let cases: [(&str, fn(Fineness) -> Plates); 3] = [
+    let cases: [Case; 3] = [
         ("case_i", case_i),
         ("case_ii", case_ii),
         ("sixteen", sixteen),
@@ -61,6 +68,30 @@ fn main() {
         let power = (last.1 / first.1).ln() / (last.0 / first.0).ln();
         println!("time grows with unknowns to the power {power:.2}");
     }
+}
+
+/// One solution, for a profile or for the memory of the process.
+fn once(words: &[String]) {
+    let fineness = match words
+        .iter()
+        .find(|word| word.starts_with(char::is_uppercase))
+    {
+        Some(word) if word == "Fine" => Fineness::Fine,
+        Some(word) if word == "Normal" => Fineness::Normal,
+        _ => Fineness::Fast,
+    };
+    let plates = match words.iter().find(|word| word.contains('_')) {
+        Some(word) if word == "case_i" => case_i(fineness),
+        Some(_) => case_ii(fineness),
+        None => sixteen(fineness),
+    };
+    let start = Instant::now();
+    let field = plates.field();
+    println!(
+        "{} unknowns, {:.2} s",
+        field.health.unknowns,
+        start.elapsed().as_secs_f64()
+    );
 }
 
 /// Unknowns and seconds on one thread.

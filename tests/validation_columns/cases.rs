@@ -70,7 +70,6 @@ fn meets(plates: &Plates, (text, radius): (&str, f64), allowed: &Allowed) {
     let largest = field.gap_max() * 1e6 / wanted("gap_max_um") - 1.0;
     let pressure = pressure_miss(&field, &reference);
     let reach = field.mean_force_radius() / radius - 1.0;
-    println!("centre {gap:.4} largest {largest:.4} pressure {pressure:.4} radius {reach:.4}");
     assert!(gap.abs() < allowed.gap, "gap at the centre: {gap}");
     assert!(largest.abs() < allowed.gap, "largest gap: {largest}");
     assert!(pressure < allowed.pressure, "pressure: {pressure}");
@@ -119,16 +118,16 @@ fn layout_cases_are_nearly_met_when_fast() {
     meets(&bowed, (CASE_II_CONCAVE, 3.949e-3), &allowed);
 }
 
-// Cells of 1.5, 1, 0.75 and 0.5 mm with the same cubic polynomial: what is left shrinks.
+// Cells of 1.5, 1, 0.75 and 0.5 mm with the same cubic polynomial: halving the spacing from 1.5 to
+// 0.75 mm at least halves what is left; 0.002 for a chance zero.
 #[test]
 fn gap_and_force_radius_converge_with_the_grid() {
-    let found: Vec<[f64; 2]> = [
+    let found = [
         Fineness::Coarse,
         Fineness::Fast,
         Fineness::Normal,
         Fineness::Fine,
     ]
-    .into_iter()
     .map(|fineness| {
         let through = Some(Through {
             elements: 1,
@@ -140,20 +139,11 @@ fn gap_and_force_radius_converge_with_the_grid() {
         }
         .field();
         [centre(&field), field.mean_force_radius()]
-    })
-    .collect();
-    println!("{found:?}");
-    for reading in 0..2 {
-        let finest = found[3][reading];
-        let miss = |at: usize| (found[at][reading] / finest - 1.0).abs();
-        // Halving the spacing from 1.5 to 0.75 mm at least halves what is left; one bound for
-        // rounding near a chance zero.
-        assert!(
-            miss(2) < 0.5 * miss(0) + 0.002,
-            "{reading}: {} {}",
-            miss(0),
-            miss(2)
-        );
+    });
+    for at in [found.map(|[gap, _]| gap), found.map(|[_, radius]| radius)] {
+        let miss = |grid: usize| (at[grid] / at[3] - 1.0).abs();
+        let (coarse, normal) = (miss(0), miss(2));
+        assert!(normal < 0.5 * coarse + 0.002, "{coarse} {normal}");
     }
 }
 
@@ -184,7 +174,6 @@ fn one_bolt_presses_as_in_a_round_pair() {
         let radii = [0, 1].map(|end| plates.hole + 0.25 * bearing * f64::from(ring + end));
         let found = field.ring_force(0, radii) / force;
         let wanted = round.carried_within(radii[1]) - round.carried_within(radii[0]);
-        println!("{radii:?} {found:.4} {wanted:.4}");
         assert!((found - wanted).abs() < 0.03, "{radii:?} {found} {wanted}");
     }
     let held = field.radius_holding(0.95) / round.radius_holding(0.95) - 1.0;
@@ -193,79 +182,110 @@ fn one_bolt_presses_as_in_a_round_pair() {
     assert!(field.contact_area() > PI * (bearing.powi(2) - plates.hole.powi(2)));
 }
 
-// From uniform to rigid: the change of the gap near the rim, a tenth of it either way at any fineness.
-#[test]
-fn a_rigid_head_changes_a_single_bolt_as_it_changes_a_round_pair() {
-    let (bearing, half) = (0.00425, 0.03);
-    let round = |head: round::Head| {
+/// One bolt in the middle of a square, as columns and as a round pair.
+#[derive(Clone)]
+struct Single {
+    thickness: [f64; 2],
+    fineness: Fineness,
+    head: [Head; 2],
+    faces: [Faces; 2],
+}
+
+/// Relative change of the gap near the rim from the first head and faces to the second, as columns
+/// and as a round pair.
+fn change_of_single(single: &Single) -> [f64; 2] {
+    const HALF: f64 = 0.03;
+    const AT: f64 = 0.025;
+    let columns = |end: usize| {
+        let plates = Plates {
+            head: single.head[end],
+            faces: single.faces[end],
+            fineness: single.fineness,
+            ..Plates::pair([2.0 * HALF; 2], single.thickness, vec![[HALF; 2]])
+        };
+        let field = plates.field();
+        field.gap_at([HALF + AT, HALF]).expect("the plate is solid")
+    };
+    let round = |end: usize| {
         round::solve(&round::Problem {
             hole_radius: 0.00275,
-            bearing_radius: bearing,
-            rim_radius: half,
-            thickness: [0.005; 2],
+            bearing_radius: 0.00425,
+            rim_radius: HALF,
+            thickness: single.thickness,
             youngs_modulus: [70e9; 2],
             poisson: [0.33; 2],
-            head,
-            faces: round::Faces::Frictionless,
+            head: match single.head[end] {
+                Head::Uniform => round::Head::Uniform,
+                Head::Rigid => round::Head::Rigid,
+            },
+            faces: match single.faces[end] {
+                Faces::Frictionless => round::Faces::Frictionless,
+                Faces::Stuck => round::Faces::Stuck,
+            },
             tolerance: 0.003,
         })
         .expect("the round pair has a solution")
-        .gap(0.025, 5000.0)
+        .gap(AT, 5000.0)
     };
-    let wanted = round(round::Head::Rigid) / round(round::Head::Uniform) - 1.0;
+    [columns(1) / columns(0) - 1.0, round(1) / round(0) - 1.0]
+}
+
+// A tenth of the change (measured: 2 to 4 % of it), at every fineness.
+#[test]
+fn a_rigid_head_changes_a_single_bolt_as_it_changes_a_round_pair() {
     for fineness in [Fineness::Fast, Fineness::Normal, Fineness::Fine] {
-        let gap = |head: Head| {
-            let plates = Plates {
-                fineness,
-                head,
-                ..Plates::pair([2.0 * half; 2], [0.005; 2], vec![[half, half]])
-            };
-            plates.field().gap_at([half + 0.025, half]).expect("solid")
-        };
-        let found = gap(Head::Rigid) / gap(Head::Uniform) - 1.0;
-        println!("{found} {wanted}");
+        let [found, wanted] = change_of_single(&Single {
+            thickness: [0.005; 2],
+            fineness,
+            head: [Head::Uniform, Head::Rigid],
+            faces: [Faces::Frictionless; 2],
+        });
+        assert!((found / wanted - 1.0).abs() < 0.1, "{found} {wanted}");
+    }
+}
+
+// A tenth of the change (measured: 3 % of it).
+#[test]
+fn stuck_faces_change_a_single_bolt_as_they_change_a_round_pair() {
+    for fineness in [Fineness::Fast, Fineness::Normal] {
+        let [found, wanted] = change_of_single(&Single {
+            thickness: [0.004, 0.01],
+            fineness,
+            head: [Head::Uniform; 2],
+            faces: [Faces::Frictionless, Faces::Stuck],
+        });
+        assert!(wanted < -0.2);
         assert!((found / wanted - 1.0).abs() < 0.1, "{found} {wanted}");
     }
 }
 
 /// Change of the gap at the centre against the plain joint.
 fn effect(plain: &Plates, changed: &Plates) -> f64 {
-    let effect = centre(&changed.field()) / centre(&plain.field()) - 1.0;
-    println!("{effect:.4}");
-    effect
+    centre(&changed.field()) / centre(&plain.field()) - 1.0
 }
 
-// Effects of the study at a fixed grid; tolerance a third of the effect. Its −10 % for a rigid head in
-// case i is not met: −17 % here, which is also the round solver's change for one such bolt.
+// Effects of the study; tolerance a third of the effect. Its −10 % for a rigid head in case i and −26 % for
+// stuck faces in case ii are not met: −17 and −37 % here, as the round solver has it for one such bolt.
 #[test]
 fn modelling_choices_move_the_gap_as_they_should() {
-    let (plain_i, plain_ii) = (case_i(Fineness::Normal), case_ii(Fineness::Normal));
-    let rigid = |plain: &Plates| Plates {
-        head: Head::Rigid,
-        ..plain.clone()
-    };
+    let (plain_i, plain_ii) = (case_i(Fineness::Fast), case_ii(Fineness::Fast));
     let near = |found: f64, wanted: f64| {
         assert!(
             (found - wanted).abs() < wanted.abs() / 3.0,
             "{found} {wanted}"
         );
     };
-    let both = [
-        effect(&plain_i, &rigid(&plain_i)),
-        effect(&plain_ii, &rigid(&plain_ii)),
-    ];
-    println!("{both:?}");
-    near(both[1], -0.16);
-    let stuck = Plates {
-        faces: Faces::Stuck,
+    let rigid = Plates {
+        head: Head::Rigid,
         ..plain_ii.clone()
     };
-    near(effect(&plain_ii, &stuck), -0.26);
+    near(effect(&plain_ii, &rigid), -0.16);
     let rough = |plain: &Plates| Plates {
         compliance: Compliance::Asperities { stiffness: 1e14 },
         ..plain.clone()
     };
     near(effect(&plain_i, &rough(&plain_i)), 0.066);
+    near(effect(&plain_ii, &rough(&plain_ii)), 0.05);
 }
 
 // A thread pulls at the wall near the face and presses the faces together beside the hole. Shallow threads do

@@ -153,7 +153,6 @@ fn the_first_set_does_not_matter() {
         })
         .unwrap();
         let again = solve_from(problem, &plain).unwrap();
-        println!("{:?} {:?} {:?}", plain.health, whole.health, little.health);
         let touches = |field: &Field| -> Vec<bool> {
             field.faces[0].pressure.iter().map(|p| *p > 0.0).collect()
         };

@@ -152,7 +152,7 @@ fn a_small_plate_on_a_large_one_touches_only_there() {
     let plan = &field.mesh.plan;
     for (column, weight) in field.faces[0].weight.iter().enumerate() {
         let [x, y] = plan.place(column);
-        let inside = x >= 0.013 && x <= 0.053 && y >= 0.009 && y <= 0.045;
+        let inside = (0.013..=0.053).contains(&x) && (0.009..=0.045).contains(&y);
         assert!(inside || *weight == 0.0, "{x} {y}");
     }
     let area = 0.04 * 0.036 - 2.0 * std::f64::consts::PI * 0.00275_f64.powi(2);
@@ -167,7 +167,6 @@ fn a_small_plate_on_a_large_one_touches_only_there() {
         ..large.clone()
     }
     .field();
-    println!("{:?} {:?}", field.health, full.health);
     assert!(field.health.cg_iterations < 2 * full.health.cg_iterations);
     // The lower plate is large beside the upper one: its overhang hardly stiffens what lies between.
     let cut = Plates {
@@ -224,7 +223,6 @@ fn a_rib_stiffens_and_a_rib_all_over_is_a_thicker_plate() {
     ]);
     let middle = |field: &Field| field.gap_at([0.02, 0.02]).expect("the plates overlap");
     let relief = middle(&ribbed) / middle(&plain);
-    println!("{relief}");
     // Twice the thickness over a quarter of the plate takes a tenth and more of the gap away.
     assert!(relief < 0.9 && relief > 0.2, "{relief}");
     let stacked = solved(vec![
