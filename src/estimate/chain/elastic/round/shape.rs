@@ -178,8 +178,7 @@ mod tests {
             "contact.faces=stuck",
             "service.medium=air",
             "filler={ name = \"graphite foil\" }",
-            "plate.lower.cooled={ face = \"film\", film = \"2000 W/(m²·K)\" }",
-            "plate.upper.bow=\"0 µm\"",
+            "plate.lower.cooled={ film = \"2000 W/(m²·K)\" }",
         ] {
             assert!(shape(&[set]).is_some(), "{set}");
         }
@@ -203,7 +202,7 @@ mod tests {
             "fastener.hole=[\"6.25 mm\", \"6.4 mm\"]",
             "fastener.engagement={ kind = \"tapped\", length = \"5 mm\" }",
             "plate.upper.diameter=\"60.1 mm\"",
-            "plate.upper.bow=\"5 µm\"",
+            "plate.upper.bow={ kind = \"convex\", height = \"5 µm\" }",
             "plate.lower.flatness=\"5 µm\"",
             "contact.compliance=asperities",
         ] {
