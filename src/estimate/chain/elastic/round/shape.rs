@@ -203,7 +203,7 @@ mod tests {
             "fastener.engagement={ kind = \"tapped\", length = \"5 mm\" }",
             "plate.upper.diameter=\"60.1 mm\"",
             "plate.upper.bow={ kind = \"convex\", height = \"5 µm\" }",
-            "plate.lower.flatness=\"5 µm\"",
+            "plate.lower.finish.flatness=\"5 µm\"",
             "contact.compliance=asperities",
         ] {
             assert_eq!(shape(&[set]), None, "{set}");
