@@ -70,10 +70,10 @@ mod tests {
             // Rounding of a handful of products.
             assert!((found / exact - 1.0).abs() < 1e-14, "{found} for {exact}");
         };
-        // Over 2π: ∫ p r dr = 2/3, ∫ p r² dr = 11/12, ∫ p² r dr = 5/12, ∫ gap r dr = 7/6, ∫ r dr = 4.
+        // Over 2π: ∫ p r dr = 2/3, ∫ p r² dr = 11/12, ∫ p² r dr = 5/12, ∫ gap r dr = 4/3, ∫ r dr = 4.
         near(field.mean_force_radius(), 11.0 / 8.0);
         near(field.mean_pressure(3.0), 3.0 * 5.0 / 8.0);
-        near(field.gap_mean(2.0), 2.0 * 7.0 / 6.0 / 4.0);
+        near(field.gap_mean(2.0), 2.0 / 3.0);
         near(field.gap_max(2.0), 2.0);
         near(field.peak(2.0), 2.0);
     }
