@@ -19,7 +19,7 @@ pub struct Field {
         hide_possible_values = true
     )]
     field: Kind,
-    /// How finely the elastic field is solved: fast, normal or fine
+    /// How finely the elastic field is solved: fast, normal or fine [default: normal]
     #[arg(long, value_enum, value_name = "LEVEL", hide_possible_values = true)]
     resolution: Option<Level>,
     /// Most memory the elastic field may take [default: 1 GB]

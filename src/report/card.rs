@@ -113,6 +113,11 @@ const FIELDS: &[(&str, &str, Form)] = &[
         "resistance",
         Form::At(Quantity::Pressure, Quantity::AreaResistance),
     ),
+    (
+        "modulus",
+        "modulus under pressure",
+        Form::In(Quantity::Pressure),
+    ),
     ("creeps", "creeps", Form::Plain),
     ("silicone", "silicone", Form::Plain),
     ("insulates", "insulates", Form::Plain),
