@@ -70,6 +70,7 @@ pub(crate) struct Draws {
 
 /// Draws whole joints; the order of the draws, not of the threads, orders the outcome.
 pub(crate) fn draws(chain: &Chain, case: usize, options: &Options) -> Result<Draws, Failure> {
+    chain.expect_draws(case)?;
     let inputs = inputs(chain);
     let sobol = Sobol::new(inputs.len(), options.seed);
     let drawn = (0..options.draws)

@@ -195,6 +195,31 @@ impl<'a> Chain<'a> {
         }
     }
 
+    /// Least and largest force in service of all bolts together over a force, N, in one case.
+    pub(super) fn force_range(&self, case: usize, over: f64) -> [f64; 2] {
+        let bands: Vec<Band> = self
+            .joint
+            .fasteners
+            .iter()
+            .zip(&self.groups)
+            .map(|(fastener, group)| group.service_band(self.joint(), fastener, case))
+            .collect();
+        let sum = |of: &dyn Fn(&Band) -> f64| -> f64 {
+            self.group_of.iter().map(|group| of(&bands[*group])).sum()
+        };
+        let low = sum(&|band| band.low.unwrap_or(band.nominal).min(band.nominal));
+        let high = sum(&|band| band.high.unwrap_or(band.nominal).max(band.nominal));
+        [low / over, high / over]
+    }
+
+    /// Works out what the draws of a case need, once; to be called before draws run side by side.
+    pub fn expect_draws(&self, case: usize) -> Result<(), Failure> {
+        match &self.model {
+            Model::Cone(_) => Ok(()),
+            Model::Elastic(model) => model.expect_draws(self, case),
+        }
+    }
+
     /// Makes ready for many torques of one group, from the least to the largest, in one case.
     ///
     /// The field of bent faces is tabulated; everything else needs no preparation.

@@ -273,8 +273,6 @@ pub struct Driver {
 
 /// Error of the surface of the draws above which the reader is told.
 const NOTICEABLE_DRAW_ERROR: f64 = 0.02;
-/// Solutions through which the surface of the draws goes: five variables, second order.
-const DESIGN_POINTS: usize = 21;
 
 /// Everything `estimate` found, upstream first.
 #[derive(Clone, Debug, PartialEq)]
@@ -334,9 +332,8 @@ impl Estimate {
             self.cautions.push(Caution {
                 code: "resistance/draw-error",
                 text: format!(
-                    "low and high are read from a surface through {} solutions that errs by up to {:.1} % of source to \
-                     sink where it was tried",
-                    DESIGN_POINTS,
+                    "low and high are read from surfaces through solved states; they err by up to {:.1} % of source to \
+                     sink where they were tried",
                     100.0 * error
                 ),
             });

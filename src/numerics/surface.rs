@@ -46,6 +46,8 @@ pub fn design(steps: &[f64]) -> Vec<Vec<f64>> {
 
 impl Surface {
     /// The surface through values at the points of [`design`], in its order; steps are not zero.
+    ///
+    /// Values of the pairs may be left out: no twist is taken then.
     pub fn through(steps: &[f64], values: &[f64]) -> Self {
         let centre = values[0];
         let along: Vec<[f64; 2]> = steps
@@ -73,6 +75,15 @@ impl Surface {
             }
         }
         surface
+    }
+
+    /// This surface with the twists of another over the same variables.
+    ///
+    /// Serves where only the points along the variables are known.
+    #[must_use]
+    pub fn with_twist_of(mut self, other: &Self) -> Self {
+        self.twist.clone_from(&other.twist);
+        self
     }
 
     /// The value at a departure from the centre.

@@ -93,12 +93,12 @@ pub(super) const ENTRIES: &[Entry] = &[
     ),
     Range.entry(
         "resistance/draw-error",
-        "The draws are read from a surface that errs",
+        "The draws are read from surfaces that err",
         [
-            "Under the elastic field the draws are not solved one by one: 21 solutions around the \
-             nominal state carry a surface of second order in force, contact, gap and both \
-             conductivities, and the draws are read from it. It is tried at four more places; the \
-             largest error there is told.",
+            "Under the elastic field the draws are not solved one by one: solutions over the whole \
+             range of force, each with steps in contact, gap and both conductivities, carry \
+             surfaces of second order, and the draws are read from them. They are tried at four \
+             more places; the largest error there is told.",
             "Low and high may be off by so much of the nominal value. Narrow the widest input \
              (friction, as a rule), or estimate the joint at its least and at its most force.",
         ],

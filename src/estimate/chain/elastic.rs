@@ -41,11 +41,14 @@ pub(super) struct ElasticModel {
 /// What one case is at nominal, and what the draws need.
 #[derive(Debug)]
 struct Case {
+    /// Its place among the cases.
+    index: usize,
+    medium: Medium,
     conditions: Conditions,
     solved: Arc<dyn Solved>,
-    /// Bounds of form and flatness worked out at another force; none where they are this case's own.
-    bounds: Option<([f64; 2], [f64; 2])>,
-    spread: OnceLock<Result<Spread, Failure>>,
+    /// What the chain that this one comes from has worked out for its draws, where it serves here.
+    inherited: Option<Arc<Spread>>,
+    spread: OnceLock<Result<Arc<Spread>, Failure>>,
 }
 
 /// How the nominal path moves with a draw.
@@ -90,7 +93,9 @@ impl ElasticModel {
                 Ok(Arc::new(Case {
                     conditions,
                     solved,
-                    bounds: self.bounds(chain, case),
+                    inherited: self.inherited(chain, case),
+                    index: case,
+                    medium: chain.joint().service.medium.clone(),
                     spread: OnceLock::new(),
                 }))
             })
@@ -104,23 +109,25 @@ impl ElasticModel {
 
     /// Error of the surface that the draws are read from, where draws were made.
     pub(super) fn draw_error(&self, case: usize) -> Option<f64> {
-        let spread = self.cases.get(case)?.spread.get()?.as_ref().ok()?;
+        let case = self.cases.get(case)?;
+        let own = || case.spread.get()?.as_ref().ok();
+        let spread = case.inherited.as_ref().or_else(own)?;
         Some(spread.response.error)
     }
 
-    /// Bounds that the chain this one comes from has worked out for the same medium.
-    ///
-    /// Bent faces need a contact of their own for every force; what rigid heads or stuck faces do
-    /// to the resistance changes little between them, so one set serves the torques of a sweep.
-    fn bounds(&self, chain: &Chain, case: usize) -> Option<([f64; 2], [f64; 2])> {
+    /// The spread of the chain that this one comes from, where its medium is the same and its
+    /// forces reach as far.
+    fn inherited(&self, chain: &Chain, case: usize) -> Option<Arc<Spread>> {
         let parent = self.cases.get(case)?;
-        let interface = parent.conditions.faces.local.interface();
-        let vacuum = matches!(chain.joint().service.medium, Medium::Vacuum);
-        if chain.joint().is_flat() || interface.gas.is_none() != vacuum {
+        if parent.medium != chain.joint().service.medium {
             return None;
         }
-        let spread = parent.spread.get()?.as_ref().ok()?;
-        Some((spread.form, spread.bent))
+        let spread = match parent.spread.get() {
+            Some(found) => found.as_ref().ok()?.clone(),
+            None => parent.inherited.clone()?,
+        };
+        let range = chain.force_range(case, spread.gauge.force());
+        spread.response.covers(range).then_some(spread)
     }
 
     pub(super) fn fineness(&self) -> Fineness {
@@ -187,41 +194,60 @@ impl ElasticModel {
             return Ok(nominal.solved.path().clone());
         }
         let spread = self.spread_of(chain, nominal)?;
-        let departure = spread.gauge.departure(conditions);
-        let moved = spread.response.applied(nominal.solved.path(), &departure);
+        let from = spread.gauge.departure(&nominal.conditions);
+        let to = spread.gauge.departure(conditions);
+        let moved = spread.response.applied(nominal.solved.path(), (&from, &to));
         let form = between(spread.form, at.field) * between(spread.bent, at.flatness);
         Ok(with_form(moved, form))
     }
 
+    /// Works out the spread of a case: it runs on all cores itself, so that draws that run side by
+    /// side must find it done.
+    pub(super) fn expect_draws(&self, chain: &Chain, case: usize) -> Result<(), Failure> {
+        self.spread_of(chain, &self.cases[case]).map(|_| ())
+    }
+
     fn spread_of<'c>(&self, chain: &Chain, case: &'c Case) -> Result<&'c Spread, Failure> {
+        if let Some(spread) = &case.inherited {
+            return Ok(spread);
+        }
+        let forces: f64 = case.conditions.forces.iter().sum();
+        self.spread_over(chain, case, chain.force_range(case.index, forces))
+    }
+
+    /// The spread of a case, worked out over a range of force where it is not known yet.
+    fn spread_over<'c>(
+        &self,
+        chain: &Chain,
+        case: &'c Case,
+        range: [f64; 2],
+    ) -> Result<&'c Spread, Failure> {
         case.spread
-            .get_or_init(|| self.spread(chain, case))
-            .as_ref()
+            .get_or_init(|| self.spread(chain, case, range).map(Arc::new))
+            .as_deref()
             .map_err(Clone::clone)
     }
 
-    /// Everything the draws of a case need, on the ground level.
-    fn spread(&self, chain: &Chain, case: &Case) -> Result<Spread, Failure> {
+    /// Everything the draws of a case need, on the ground level, over a range of force over the
+    /// nominal.
+    fn spread(&self, chain: &Chain, case: &Case, range: [f64; 2]) -> Result<Spread, Failure> {
         let base = self.solved(
             chain,
             (GROUND, Variant::Stated),
             (&case.conditions, &Factors::NONE),
         )?;
         let gauge = Gauge::of(&case.conditions, base.mean_pressure(), base.gap_mean());
-        let response = Response::through(|departures| {
-            departures
-                .par_iter()
-                .map(|departure| self.departed(chain, &case.conditions, departure))
-                .collect::<Result<Vec<Path>, Failure>>()
-        })?;
-        if let Some((form, bent)) = case.bounds {
-            return Ok(Spread {
-                gauge,
-                response,
-                form,
-                bent,
-            });
-        }
+        let open = self.departed(chain, &case.conditions, &response::open(range))?;
+        let response = Response::through(
+            range,
+            |departures| {
+                departures
+                    .par_iter()
+                    .map(|departure| self.departed(chain, &case.conditions, departure))
+                    .collect::<Result<Vec<Path>, Failure>>()
+            },
+            open,
+        )?;
         let ratio = |variant: &Variant| {
             let solved = self.solved(
                 chain,
@@ -298,18 +324,17 @@ impl ElasticModel {
         chain: &Chain,
         (case, [low, high]): (usize, [f64; 2]),
     ) -> Result<(), Failure> {
-        if chain.joint().is_flat() {
-            return Ok(());
-        }
         let nominal = &self.cases[case];
         let forces = &nominal.conditions.forces;
-        let reach = response::FORCE_REACH;
         let joint = chain.joint();
-        self.solver
-            .tabulate(joint, self.level(), (forces, [low, high]))?;
-        self.solver
-            .tabulate(joint, GROUND, (forces, [low / reach, high * reach]))?;
-        self.spread_of(chain, nominal)?;
+        // Draws go beyond the nominal forces at both ends.
+        let own = chain.force_range(case, forces.iter().sum());
+        let drawn = [low.min(1.0) * own[0], high.max(1.0) * own[1]];
+        if !joint.is_flat() {
+            self.solver
+                .tabulate(joint, self.level(), (forces, [low, high]))?;
+        }
+        self.spread_over(chain, nominal, drawn)?;
         Ok(())
     }
 

@@ -156,10 +156,18 @@ impl Face<'_> {
             .collect()
     }
 
+    /// Largest gap between faying faces of all columns that are no slivers, m.
+    pub fn faying_gap_max(&self) -> f64 {
+        (0..self.plan().columns())
+            .filter(|column| self.is_full(*column))
+            .map(|column| self.values.gap[column])
+            .fold(0.0, f64::max)
+    }
+
     /// Largest gap, beside feet included, m.
     pub fn gap_max(&self) -> f64 {
-        let gaps = self.values.gap.iter().chain(&self.values.open_gap);
-        gaps.copied().fold(0.0, f64::max)
+        let open = self.values.open_gap.iter().copied();
+        open.fold(self.faying_gap_max(), f64::max)
     }
 
     /// Mean gap over the whole overlap without holes, m; contact counts as 0.

@@ -53,7 +53,7 @@ pub fn field(case: &CaseResult, detail: Detail) -> String {
         line(health(&solved.health));
         if let Some(error) = case.draw_error {
             line(format!(
-                "draws are read from a surface through 21 solutions, off by {} where it was tried",
+                "draws are read from surfaces through solved states, off by {} where they were tried",
                 percent(error)
             ));
         }

@@ -1,40 +1,46 @@
-//! How the resistances answer to force, faces and conductivities: a surface for the draws.
+//! How the resistances answer to force, faces and conductivities: surfaces for the draws.
 
 use crate::{
-    conductance::Local,
     estimate::chain::conditions::Conditions,
     numerics::surface::{Surface, design},
     resistance::Path,
 };
 
-/// Number of variables of the surface.
-pub(super) const VARIABLES: usize = 5;
-/// Half width of the design along each variable: force, contact, gap, both conductivities; as
-/// logarithms of the ratio to nominal.
+/// Number of variables: force, contact, gap, conductivity of both plates.
+const VARIABLES: usize = 5;
+/// Half width of the design along contact, gap and both conductivities, as logarithms of the ratio
+/// to nominal.
 ///
-/// About where the draws lie: friction and tool move the force by a third, surfaces and laws the
-/// contact by half, gas and roughness the gap by a fourth, conductivities by a few hundredths.
-const STEPS: [f64; VARIABLES] = [0.35, 0.45, 0.25, 0.06, 0.06];
-/// Largest factor on the force in the design.
-pub(super) const FORCE_REACH: f64 = 1.42;
-/// Places at which the surface is held against direct solutions, in half widths of the design.
+/// About where the draws lie: surfaces and laws move the contact by half, gas and roughness the gap
+/// by a fourth, conductivities by a few hundredths.
+const STEPS: [f64; VARIABLES - 1] = [0.6, 0.25, 0.06, 0.06];
+/// Widest step between two forces that are solved, as a logarithm of their ratio.
+const FORCE_STEP: f64 = 0.6;
+/// Narrowest reach to either side of the nominal force, likewise.
+const LEAST_REACH: f64 = 0.1;
+/// Least force that is solved, over the nominal: below it the answer is that of this force as long
+/// as any is left.
+const LEAST_FORCE: f64 = 0.02;
+/// Places at which the surfaces are held against direct solutions: force between the ends of its
+/// range, the others in half widths of the design.
 const PROBES: [[f64; VARIABLES]; 4] = [
-    [0.7, -0.6, 0.5, -0.8, 0.8],
-    [-0.8, 0.7, -0.6, 0.5, -0.7],
-    [-0.6, -0.8, 0.7, 0.7, 0.6],
-    [0.8, 0.5, -0.7, -0.6, -0.5],
+    [0.8, -0.6, 0.5, -0.8, 0.8],
+    [0.15, 0.7, -0.6, 0.5, -0.7],
+    [0.35, -0.8, 0.7, 0.7, 0.6],
+    [0.6, 0.5, -0.7, -0.6, -0.5],
 ];
 
-/// Departure of a state from the nominal one: logarithms of ratios.
+/// Departure of a state from the nominal one: logarithms of ratios; the force is −∞ where none is
+/// left.
 pub(super) type Departure = [f64; VARIABLES];
 
 /// What stands for the faces in a departure: conductance at one pressure and at one gap.
 #[derive(Clone, Copy, Debug)]
 pub(super) struct Gauge {
     /// Mean pressure as the force meets it, Pa.
-    pub(super) pressure: f64,
+    pressure: f64,
     /// Mean gap, m.
-    pub(super) gap: f64,
+    gap: f64,
     force: f64,
     touching: f64,
     parted: f64,
@@ -54,98 +60,234 @@ impl Gauge {
         }
     }
 
+    /// Nominal force of all bolts, N.
+    pub(super) fn force(&self) -> f64 {
+        self.force
+    }
+
     /// Where other conditions lie from the nominal ones.
     pub(super) fn departure(&self, conditions: &Conditions) -> Departure {
-        let local: &Local = &conditions.faces.local;
         let ratio = |value: f64, nominal: f64| {
             if nominal > 0.0 && value > 0.0 {
                 (value / nominal).ln()
             } else {
-                // Nothing crosses an open gap in vacuum, in the nominal state as in any other.
+                // Nothing crosses an open gap without gas and radiation, in no state.
                 0.0
             }
         };
+        let force: f64 = conditions.forces.iter().sum();
         [
-            ratio(conditions.forces.iter().sum(), self.force),
+            if force > 0.0 {
+                (force / self.force).ln()
+            } else {
+                f64::NEG_INFINITY
+            },
             ratio(conditions.faces.conductance(self.pressure), self.touching),
-            ratio(local.parted(self.gap), self.parted),
+            ratio(conditions.faces.local.parted(self.gap), self.parted),
             ratio(conditions.conductivity[0], self.conductivity[0]),
             ratio(conditions.conductivity[1], self.conductivity[1]),
         ]
     }
 }
 
-/// The answers of one case as surfaces over the departure.
+/// Readings of a path that go smoothly with the departure.
 ///
 /// ```text
-/// ln(R/R₀) for contact, perfect contact and what the joint adds;
+/// ln R for contact, perfect contact and what the joint adds;
 /// node to node, interface and hottest as shares of source to sink
 /// ```
+type Readings = [f64; 6];
+
+/// The answers of one case over a range of force.
+///
+/// At every solved force a surface of second order over contact, gap and conductivities; its twists
+/// are those of the nominal force. Between forces a parabola through the three nearest.
 #[derive(Clone, Debug)]
 pub(super) struct Response {
-    surfaces: [Surface; READINGS],
+    /// Logarithms of the force over the nominal one, rising.
+    forces: Vec<f64>,
+    /// One for each force and reading.
+    surfaces: Vec<[Surface; 6]>,
+    /// The path when no force is left and the faces only lie on each other.
+    open: Path,
     /// Largest error of source to sink at the probes, relative.
     pub(super) error: f64,
 }
 
-const READINGS: usize = 6;
-
 impl Response {
-    /// Solves the design and the probes, and lays the surfaces through the former.
+    /// Solves the designs and the probes, and lays the surfaces through the former.
+    ///
+    /// `range` is the least and the largest force over the nominal; `solve` finds the paths of many
+    /// departures, `open` that without force.
     pub(super) fn through<E>(
+        range: [f64; 2],
         solve: impl Fn(&[Departure]) -> Result<Vec<Path>, E>,
+        open: Path,
     ) -> Result<Self, E> {
-        let points: Vec<Departure> = design(&STEPS)
-            .iter()
-            .map(|point| std::array::from_fn(|variable| point[variable]))
-            .chain(PROBES.map(|probe| std::array::from_fn(|i| probe[i] * STEPS[i])))
-            .collect();
+        let forces = forces(range);
+        let whole = design(&STEPS);
+        let alone = 1 + 2 * STEPS.len();
+        let mut points: Vec<Departure> = Vec::new();
+        for force in &forces {
+            let nominal = *force == 0.0;
+            let taken = if nominal { whole.len() } else { alone };
+            points.extend(whole[..taken].iter().map(|rest| at(*force, rest)));
+        }
+        let solutions = points.len();
+        let ends = [forces[0], forces[forces.len() - 1]];
+        points.extend(PROBES.map(|[along, rest @ ..]| {
+            let force = ends[0] + along * (ends[1] - ends[0]);
+            let rest: Vec<f64> = rest
+                .iter()
+                .zip(STEPS)
+                .map(|(part, step)| part * step)
+                .collect();
+            at(force, &rest)
+        }));
         let paths = solve(&points)?;
-        let (design, probes) = paths.split_at(paths.len() - PROBES.len());
-        let read: Vec<[f64; READINGS]> = design.iter().map(readings).collect();
-        let surfaces = std::array::from_fn(|reading| {
-            let values: Vec<f64> = read.iter().map(|values| values[reading]).collect();
-            Surface::through(&STEPS, &values)
-        });
+        let (designs, probes) = paths.split_at(solutions);
+        let read: Vec<Readings> = designs.iter().map(readings).collect();
         let mut response = Self {
-            surfaces,
+            surfaces: surfaces(&forces, &read),
+            forces,
+            open,
             error: 0.0,
         };
-        let centre = &design[0];
-        for (path, departure) in probes.iter().zip(&points[design.len()..]) {
-            let told = response.applied(centre, departure).source_to_sink;
-            let off = (told / path.source_to_sink - 1.0).abs();
+        let centre = solutions_at_nominal(&response.forces, alone);
+        for (path, departure) in probes.iter().zip(&points[solutions..]) {
+            let told = response.applied(&designs[centre], (&[0.0; VARIABLES], departure));
+            let off = (told.source_to_sink / path.source_to_sink - 1.0).abs();
             response.error = response.error.max(off);
         }
         Ok(response)
     }
 
-    /// The nominal path of a finer solution, moved as the surfaces say.
-    pub(super) fn applied(&self, nominal: &Path, departure: &Departure) -> Path {
-        let [contact, perfect, added, node, interface, hottest]: [f64; READINGS] =
-            std::array::from_fn(|reading| {
-                let surface = &self.surfaces[reading];
-                surface.at(departure) - surface.at(&[0.0; VARIABLES])
-            });
-        let perfect_contact = nominal.perfect_contact * perfect.exp();
-        let added_by_joint = nominal.added_by_joint * added.exp();
+    /// Whether a range of force over the nominal lies inside.
+    pub(super) fn covers(&self, [low, high]: [f64; 2]) -> bool {
+        const ROUNDING: f64 = 1e-9;
+        let ends = [self.forces[0], self.forces[self.forces.len() - 1]];
+        low.max(LEAST_FORCE).ln() >= ends[0] - ROUNDING && high.ln() <= ends[1] + ROUNDING
+    }
+
+    /// A path of a finer solution at one departure, moved to another as the surfaces say.
+    pub(super) fn applied(&self, path: &Path, (from, to): (&Departure, &Departure)) -> Path {
+        if to[0] == f64::NEG_INFINITY {
+            return Path {
+                coolant_drop: path.coolant_drop,
+                ..self.open.clone()
+            };
+        }
+        let (there, here) = (self.at(to), self.at(from));
+        let [contact, perfect, added, node, interface, hottest]: Readings =
+            std::array::from_fn(|reading| there[reading] - here[reading]);
+        let perfect_contact = path.perfect_contact * perfect.exp();
+        let added_by_joint = path.added_by_joint * added.exp();
         let source_to_sink = perfect_contact + added_by_joint;
-        let share =
-            |value: f64, moved: f64| (value / nominal.source_to_sink + moved) * source_to_sink;
+        let share = |value: f64, moved: f64| (value / path.source_to_sink + moved) * source_to_sink;
         Path {
-            contact: nominal.contact * contact.exp(),
+            contact: path.contact * contact.exp(),
             perfect_contact,
             added_by_joint,
             source_to_sink,
-            node_to_node: share(nominal.node_to_node, node),
-            interface_drop: share(nominal.interface_drop, interface),
-            hottest: share(nominal.hottest, hottest),
-            ..nominal.clone()
+            node_to_node: share(path.node_to_node, node),
+            interface_drop: share(path.interface_drop, interface),
+            hottest: share(path.hottest, hottest),
+            ..path.clone()
         }
+    }
+
+    /// Readings at a departure.
+    fn at(&self, departure: &Departure) -> Readings {
+        let [force, rest @ ..] = departure;
+        let last = self.forces.len() - 1;
+        let force = force.clamp(self.forces[0], self.forces[last]);
+        let nearest = (0..=last)
+            .min_by(|one, other| {
+                let off = |index: &usize| (self.forces[*index] - force).abs();
+                off(one).total_cmp(&off(other))
+            })
+            .unwrap_or(0);
+        let first = nearest.clamp(1, last - 1) - 1;
+        let nodes = &self.forces[first..first + 3];
+        let mut read = [0.0; 6];
+        for (place, node) in nodes.iter().enumerate() {
+            let weight: f64 = nodes
+                .iter()
+                .filter(|other| *other != node)
+                .map(|other| (force - other) / (node - other))
+                .product();
+            for (sum, surface) in read.iter_mut().zip(&self.surfaces[first + place]) {
+                *sum += weight * surface.at(rest);
+            }
+        }
+        read
     }
 }
 
-fn readings(path: &Path) -> [f64; READINGS] {
+/// The departure that stands for no force at all: the least force of a range, with contact that
+/// conducts next to nothing where the faces touch.
+pub(super) fn open(range: [f64; 2]) -> Departure {
+    const NEXT_TO_NOTHING: f64 = 1e-9;
+    let mut departure = [0.0; VARIABLES];
+    departure[0] = forces(range)[0];
+    departure[1] = NEXT_TO_NOTHING.ln();
+    departure
+}
+
+fn at(force: f64, rest: &[f64]) -> Departure {
+    std::array::from_fn(|variable| match variable {
+        0 => force,
+        _ => rest[variable - 1],
+    })
+}
+
+/// Forces to be solved: nominal, and evenly to both ends of the range.
+fn forces([low, high]: [f64; 2]) -> Vec<f64> {
+    let below = low.max(LEAST_FORCE).ln().min(-LEAST_REACH);
+    let above = high.ln().max(LEAST_REACH);
+    let even = |end: f64| {
+        let count = (end.abs() / FORCE_STEP).ceil().max(1.0) as usize;
+        (1..=count).map(move |step| end * step as f64 / count as f64)
+    };
+    let mut forces: Vec<f64> = even(below).collect();
+    forces.reverse();
+    forces.push(0.0);
+    forces.extend(even(above));
+    forces
+}
+
+/// Index of the nominal solution in designs of which all others have `alone` points.
+fn solutions_at_nominal(forces: &[f64], alone: usize) -> usize {
+    forces.iter().take_while(|force| **force < 0.0).count() * alone
+}
+
+/// Surfaces through readings that stand force by force.
+fn surfaces(forces: &[f64], read: &[Readings]) -> Vec<[Surface; 6]> {
+    let whole = design(&STEPS).len();
+    let alone = 1 + 2 * STEPS.len();
+    let nominal = solutions_at_nominal(forces, alone);
+    let through = |reading: usize, values: &[Readings]| {
+        let values: Vec<f64> = values.iter().map(|values| values[reading]).collect();
+        Surface::through(&STEPS, &values)
+    };
+    let centre: [Surface; 6] =
+        std::array::from_fn(|reading| through(reading, &read[nominal..nominal + whole]));
+    let mut next = 0;
+    forces
+        .iter()
+        .map(|force| {
+            if *force == 0.0 {
+                next += whole;
+                return centre.clone();
+            }
+            let own = &read[next..next + alone];
+            next += alone;
+            std::array::from_fn(|reading| through(reading, own).with_twist_of(&centre[reading]))
+        })
+        .collect()
+}
+
+fn readings(path: &Path) -> Readings {
     let whole = path.source_to_sink;
     [
         path.contact.ln(),
@@ -155,4 +297,23 @@ fn readings(path: &Path) -> [f64; READINGS] {
         path.interface_drop / whole,
         path.hottest / whole,
     ]
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn forces_reach_both_ends_in_steps_and_hold_the_nominal() {
+        let found = forces([0.1, 1.4]);
+        assert!(found.contains(&0.0));
+        assert!((found[0] - 0.1_f64.ln()).abs() < 1e-12);
+        assert!(
+            found
+                .windows(2)
+                .all(|pair| (0.0..=FORCE_STEP + 1e-12).contains(&(pair[1] - pair[0])))
+        );
+        assert!(forces([1.0, 1.0]).len() == 3);
+        assert!((forces([0.0, 1.0])[0] - LEAST_FORCE.ln()).abs() < 1e-12);
+    }
 }

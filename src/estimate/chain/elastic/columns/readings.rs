@@ -23,8 +23,9 @@ const ENERGY_NOISE: f64 = 1e-9;
 
 /// Widest gap between faying faces, what lies beside feet left out, m.
 pub(super) fn widest(field: &Field) -> f64 {
-    let gaps = field.faces.iter().flat_map(|face| face.gap.iter().copied());
-    gaps.fold(0.0, f64::max)
+    (0..field.faces.len())
+        .map(|interface| field.face(interface).faying_gap_max())
+        .fold(0.0, f64::max)
 }
 
 impl Solved for OnColumns {
