@@ -148,12 +148,14 @@ impl ElasticModel {
         self.solver.solved(chain.joint(), task, under)
     }
 
-    /// The pressure field of a case at nominal.
+    /// The pressure field of a case at nominal; what becomes of flatness is that of the first case.
     pub(super) fn pressure(&self, chain: &Chain, case: usize) -> Result<PressureResult, Failure> {
         let nominal = &self.cases[case];
-        let flatness =
-            self.solver
-                .flatness(chain.joint(), self.level(), &nominal.conditions.forces)?;
+        let flatness = self.solver.flatness(
+            chain.joint(),
+            self.level(),
+            &self.cases[0].conditions.forces,
+        )?;
         Ok(nominal.solved.pressure(flatness, cone_beside(chain, case)?))
     }
 
@@ -248,6 +250,16 @@ impl ElasticModel {
             },
             open,
         )?;
+        if case.index > 0 {
+            // Ratios hardly know the temperature of the case; the first one's serve all.
+            let first = self.spread_of(chain, &self.cases[0])?;
+            return Ok(Spread {
+                gauge,
+                response,
+                form: first.form,
+                bent: first.bent,
+            });
+        }
         let ratio = |variant: &Variant| {
             let solved = self.solved(
                 chain,
