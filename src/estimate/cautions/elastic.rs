@@ -17,9 +17,9 @@ const SQUEEZED: f64 = 0.5;
 /// What a solved field says of a joint, the cases as they come.
 pub(super) fn cautions(chain: &Chain, cases: &[CaseResult]) -> Vec<Caution> {
     let joint = chain.joint();
-    let mut found = Vec::new();
+    // All cases have the flatness of the first.
+    let mut found: Vec<Caution> = cases.first().and_then(stays_open).into_iter().collect();
     for (index, case) in cases.iter().enumerate() {
-        found.extend(stays_open(case));
         found.extend(limits(joint, case));
         // A layer gives way at an edge, where hard faces cut into each other.
         if let Some(edge) = chain.pressed_edge(index).filter(|_| !yields(joint)) {
@@ -66,17 +66,15 @@ fn stays_open(case: &CaseResult) -> Option<Caution> {
             left,
             flat,
         } => format!(
-            "{} case: faces that stand up to {:.1} µm apart unbolted keep a gap of {:.1} µm under the bolts, where flat \
+            "faces that stand up to {:.1} µm apart unbolted keep a gap of {:.1} µm under the bolts, where flat \
              ones would have {:.1} µm; the gap is in these numbers",
-            case.name,
             initial * 1e6,
             left * 1e6,
             flat * 1e6
         ),
         Flatness::Stated { height, left, flat } => format!(
-            "{} case: faces flat within {:.0} µm keep a gap of up to {:.1} µm if convex and {:.1} µm if concave, where \
+            "faces flat within {:.0} µm keep a gap of up to {:.1} µm if convex and {:.1} µm if concave, where \
              flat ones would have {:.1} µm; nominal is flat, low and high are bent",
-            case.name,
             height * 1e6,
             left[0] * 1e6,
             left[1] * 1e6,
