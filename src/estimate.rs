@@ -111,6 +111,9 @@ pub enum Failure {
         "bolts thread into both plates from opposite sides; the elastic field takes threads in one of them"
     )]
     ThreadsInBothPlates,
+    /// The heat through the solved plates has no number.
+    #[error("the heat through the plates has no number: {0}")]
+    Heat(resistance::Failure),
     /// No clamp force is left.
     #[error(
         "no clamp force is left in service at {bolts} of {of} bolts in case `{case}`, so the joint is open there; raise the preload, lengthen the grip or match the expansion"

@@ -111,7 +111,7 @@ impl<'a> Chain<'a> {
     fn levelled(&self) -> Result<Model, Failure> {
         Ok(match &self.model {
             Model::Cone(model) => Model::Cone(model.levelled(self)?),
-            Model::Elastic(model) => Model::Elastic(model.levelled(self)?),
+            Model::Elastic(model) => Model::Elastic(model.levelled(self)),
         })
     }
 
@@ -197,19 +197,8 @@ impl<'a> Chain<'a> {
 
     /// Least and largest force in service of all bolts together over a force, N, in one case.
     pub(super) fn force_range(&self, case: usize, over: f64) -> [f64; 2] {
-        let bands: Vec<Band> = self
-            .joint
-            .fasteners
-            .iter()
-            .zip(&self.groups)
-            .map(|(fastener, group)| group.service_band(self.joint(), fastener, case))
-            .collect();
-        let sum = |of: &dyn Fn(&Band) -> f64| -> f64 {
-            self.group_of.iter().map(|group| of(&bands[*group])).sum()
-        };
-        let low = sum(&|band| band.low.unwrap_or(band.nominal).min(band.nominal));
-        let high = sum(&|band| band.high.unwrap_or(band.nominal).max(band.nominal));
-        [low / over, high / over]
+        self.force_ends(case)
+            .map(|forces| forces.iter().sum::<f64>() / over)
     }
 
     /// Works out what the draws of a case need, once; to be called before draws run side by side.
@@ -263,15 +252,40 @@ impl<'a> Chain<'a> {
 
     /// Refuses a case in which a bolt no longer clamps.
     pub(super) fn refuse_open(&self, case: usize, forces: &[f64]) -> Result<(), Failure> {
-        let open = forces.iter().filter(|force| **force <= 0.0).count();
-        if open > 0 {
-            return Err(Failure::Open {
-                bolts: open,
-                of: forces.len(),
-                case: self.joint().service.cases[case].name,
-            });
+        if forces.iter().any(|force| *force <= 0.0) {
+            return Err(self.open(case, forces));
         }
         Ok(())
+    }
+
+    /// The failure of a case in which bolts no longer clamp.
+    pub(super) fn open(&self, case: usize, forces: &[f64]) -> Failure {
+        Failure::Open {
+            bolts: forces.iter().filter(|force| **force <= 0.0).count(),
+            of: forces.len(),
+            case: self.joint().service.cases[case].name,
+        }
+    }
+
+    /// Least and largest force in service of every bolt in one case, N.
+    pub(super) fn force_ends(&self, case: usize) -> [Vec<f64>; 2] {
+        let bands: Vec<Band> = self
+            .joint
+            .fasteners
+            .iter()
+            .zip(&self.groups)
+            .map(|(fastener, group)| group.service_band(self.joint(), fastener, case))
+            .collect();
+        let ends = |of: &dyn Fn(&Band) -> f64| -> Vec<f64> {
+            self.group_of
+                .iter()
+                .map(|group| of(&bands[*group]))
+                .collect()
+        };
+        [
+            ends(&|band| band.low.unwrap_or(band.nominal).min(band.nominal)),
+            ends(&|band| band.high.unwrap_or(band.nominal).max(band.nominal)),
+        ]
     }
 
     /// Every bolt of a case, at the nominal state.
@@ -290,7 +304,7 @@ impl<'a> Chain<'a> {
                     largest_torque: strength.largest_torque.map(|(torque, _)| torque),
                     contact_radius: match &self.model {
                         Model::Cone(model) => model.cones()[bolt].contact_radius,
-                        Model::Elastic(model) => model.contact_radius(case, bolt),
+                        Model::Elastic(model) => model.contact_radius(self, (case, bolt)),
                     },
                     contact_conductance: state.path.contact_per_bolt[bolt],
                 }
@@ -325,7 +339,7 @@ impl<'a> Chain<'a> {
                     gap: None,
                 })
             }
-            Model::Elastic(model) => model.met_at(0, point),
+            Model::Elastic(model) => model.met_at(self, point),
         }
     }
 
@@ -333,7 +347,7 @@ impl<'a> Chain<'a> {
     pub fn rings(&self, bolt: usize, state: &State) -> Vec<RingRow> {
         match &self.model {
             Model::Cone(model) => model.cells().rings(&state.conditions.load(), bolt),
-            Model::Elastic(model) => model.rings(0, bolt),
+            Model::Elastic(model) => model.rings(self, bolt),
         }
     }
 
@@ -341,7 +355,7 @@ impl<'a> Chain<'a> {
     pub fn footprint(&self) -> f64 {
         match &self.model {
             Model::Cone(model) => model.cells().interface_area,
-            Model::Elastic(model) => model.footprint(),
+            Model::Elastic(model) => model.footprint(self),
         }
     }
 
@@ -370,7 +384,7 @@ impl<'a> Chain<'a> {
     pub(super) fn pressed_edge(&self, case: usize) -> Option<PressedEdge> {
         match &self.model {
             Model::Cone(_) => None,
-            Model::Elastic(model) => model.pressed_edge(self.joint(), case),
+            Model::Elastic(model) => model.pressed_edge(self, case),
         }
     }
 

@@ -32,6 +32,17 @@ impl Plate {
     }
 }
 
+impl Plate {
+    /// Out-of-flatness that is stated without its shape, m; 0 beside a bow or a map, which have one.
+    pub fn loose_flatness(&self) -> f64 {
+        if self.bow.is_some() || self.flatness_map.is_some() {
+            0.0
+        } else {
+            self.flatness.unwrap_or(0.0)
+        }
+    }
+}
+
 impl Joint {
     /// Gap between the two faces as they come together, before any force, at a point of the joint, m.
     ///

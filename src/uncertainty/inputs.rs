@@ -136,7 +136,7 @@ const FLATNESS: Input = Input {
 };
 const FORM: Input = Input {
     name: "rigid head, stuck faces, asperity give",
-    remedy: "state head_model, faces and compliance under [contact], or measure the joint",
+    remedy: "measure the joint: the opposite choices of [contact] bound what is not known of them",
     place: |at, u| at.field = even(u),
     reading: |at| at.field,
 };
@@ -207,9 +207,11 @@ pub fn inputs(chain: &Chain) -> Vec<Input> {
     }
     found.extend(CONDUCTIVITY);
     if chain.knows_the_gap() {
-        if joint.plates.iter().any(|plate| {
-            plate.bow.is_none() && plate.flatness.is_some_and(|flatness| flatness > 0.0)
-        }) {
+        if joint
+            .plates
+            .iter()
+            .any(|plate| plate.loose_flatness() > 0.0)
+        {
             found.push(FLATNESS);
         }
         found.push(FORM);

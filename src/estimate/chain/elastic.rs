@@ -6,28 +6,27 @@ mod response;
 mod rings;
 mod round;
 mod solver;
+mod spread;
 mod variant;
 
 use std::sync::{Arc, OnceLock};
-
-use rayon::prelude::*;
 
 use crate::{
     conductance,
     estimate::{
         Chain, ConeBeside, Failure, Fineness, Meeting, PressureResult, Realisation, RingRow, Watch,
-        chain::{PressedEdge, conditions::Conditions, form::with_form},
+        chain::{PressedEdge, conditions::Conditions},
     },
     joint::{Joint, Medium},
     resistance::Path,
 };
 
 use columns::Columns;
-use level::{GROUND, Level, asked, coarser};
-use response::{Departure, Gauge, Response};
+use level::{Level, asked, coarser};
 use round::Round;
 use solver::{Factors, Solved, Solver};
-use variant::{Variant, loose_flatness};
+use spread::Spread;
+use variant::Variant;
 
 /// The solved field of a joint, brought to the forces and the medium of a chain.
 #[derive(Clone, Debug)]
@@ -35,31 +34,20 @@ pub(super) struct ElasticModel {
     fineness: Fineness,
     /// Shared with the chains of other torques and media.
     solver: Arc<dyn Solver>,
-    cases: Vec<Arc<Case>>,
+    /// Every case, solved when it is first asked for.
+    cases: Vec<Arc<OnceLock<Result<Case, Failure>>>>,
+    medium: Medium,
+    /// What the chain this one comes from has worked out for its draws, case by case.
+    parent: Vec<Option<(Medium, Arc<Spread>)>>,
 }
 
 /// What one case is at nominal, and what the draws need.
 #[derive(Debug)]
 struct Case {
-    /// Its place among the cases.
-    index: usize,
-    medium: Medium,
     conditions: Conditions,
-    solved: Arc<dyn Solved>,
-    /// What the chain that this one comes from has worked out for its draws, where it serves here.
-    inherited: Option<Arc<Spread>>,
+    /// None where no bolt clamps any more.
+    solved: Option<Arc<dyn Solved>>,
     spread: OnceLock<Result<Arc<Spread>, Failure>>,
-}
-
-/// How the nominal path moves with a draw.
-#[derive(Clone, Debug)]
-struct Spread {
-    gauge: Gauge,
-    response: Response,
-    /// Model form as a factor on what the joint adds: low and high.
-    form: [f64; 2],
-    /// Convex and concave as factors on what the joint adds; 1 where no flatness is loose.
-    bent: [f64; 2],
 }
 
 impl ElasticModel {
@@ -76,58 +64,71 @@ impl ElasticModel {
             fineness,
             solver,
             cases: Vec::new(),
+            medium: joint.service.medium.clone(),
+            parent: Vec::new(),
         })
     }
 
-    /// Solves the nominal state of every case of a chain.
-    pub(super) fn levelled(&self, chain: &Chain) -> Result<Self, Failure> {
-        let cases = (0..chain.joint().service.cases.len())
-            .map(|case| {
-                let conditions = chain.conditions(case, &Realisation::default())?;
-                chain.refuse_open(case, &conditions.forces)?;
-                let solved = self.solved(
-                    chain,
-                    (self.level(), Variant::Stated),
-                    (&conditions, &Factors::NONE),
-                )?;
-                Ok(Arc::new(Case {
-                    conditions,
-                    solved,
-                    inherited: self.inherited(chain, case),
-                    index: case,
-                    medium: chain.joint().service.medium.clone(),
-                    spread: OnceLock::new(),
-                }))
-            })
-            .collect::<Result<Vec<Arc<Case>>, Failure>>()?;
-        Ok(Self {
+    /// The same plates for the forces and the medium of a chain; nothing is solved yet.
+    pub(super) fn levelled(&self, chain: &Chain) -> Self {
+        let count = chain.joint().service.cases.len();
+        Self {
             fineness: self.fineness,
             solver: self.solver.clone(),
-            cases,
-        })
-    }
-
-    /// Error of the surface that the draws are read from, where draws were made.
-    pub(super) fn draw_error(&self, case: usize) -> Option<f64> {
-        let case = self.cases.get(case)?;
-        let own = || case.spread.get()?.as_ref().ok();
-        let spread = case.inherited.as_ref().or_else(own)?;
-        Some(spread.response.error)
-    }
-
-    /// The spread of the chain that this one comes from, where its medium is the same and its
-    /// forces reach as far.
-    fn inherited(&self, chain: &Chain, case: usize) -> Option<Arc<Spread>> {
-        let parent = self.cases.get(case)?;
-        if parent.medium != chain.joint().service.medium {
-            return None;
+            cases: (0..count).map(|_| Arc::new(OnceLock::new())).collect(),
+            medium: chain.joint().service.medium.clone(),
+            parent: (0..count).map(|case| self.known_spread(case)).collect(),
         }
-        let spread = match parent.spread.get() {
-            Some(found) => found.as_ref().ok()?.clone(),
-            None => parent.inherited.clone()?,
+    }
+
+    /// The spread of a case with its medium, where one is known.
+    fn known_spread(&self, case: usize) -> Option<(Medium, Arc<Spread>)> {
+        let own = || {
+            let case = self.cases.get(case)?.get()?.as_ref().ok()?;
+            let spread = case.spread.get()?.as_ref().ok()?;
+            Some((self.medium.clone(), spread.clone()))
         };
-        let range = chain.force_range(case, spread.gauge.force());
-        spread.response.covers(range).then_some(spread)
+        let given = || self.parent.get(case)?.clone();
+        // A chain that takes its parent's spread works out none of its own.
+        own().or_else(given)
+    }
+
+    /// A case, solved at nominal.
+    fn case(&self, chain: &Chain, index: usize) -> Result<&Case, Failure> {
+        self.cases[index]
+            .get_or_init(|| {
+                let conditions = chain.conditions(index, &Realisation::default())?;
+                let solved = if conditions.forces.iter().sum::<f64>() > 0.0 {
+                    chain.refuse_open(index, &conditions.forces)?;
+                    let stated = (self.level(), Variant::Stated);
+                    Some(self.solved(chain, stated, (&conditions, &Factors::NONE))?)
+                } else {
+                    None
+                };
+                Ok(Case {
+                    conditions,
+                    solved,
+                    spread: OnceLock::new(),
+                })
+            })
+            .as_ref()
+            .map_err(Clone::clone)
+    }
+
+    /// A case in which bolts clamp, with its contact and heat.
+    fn closed(&self, chain: &Chain, index: usize) -> Result<(&Case, &dyn Solved), Failure> {
+        let case = self.case(chain, index)?;
+        match &case.solved {
+            Some(solved) => Ok((case, solved.as_ref())),
+            None => Err(chain.open(index, &case.conditions.forces)),
+        }
+    }
+
+    /// Error of the surfaces that the draws are read from, where draws were made.
+    pub(super) fn draw_error(&self, case: usize) -> Option<f64> {
+        let case = self.cases.get(case)?.get()?.as_ref().ok()?;
+        let spread = case.spread.get()?.as_ref().ok()?;
+        Some(spread.response.error)
     }
 
     pub(super) fn fineness(&self) -> Fineness {
@@ -150,209 +151,150 @@ impl ElasticModel {
 
     /// The pressure field of a case at nominal; what becomes of flatness is that of the first case.
     pub(super) fn pressure(&self, chain: &Chain, case: usize) -> Result<PressureResult, Failure> {
-        let nominal = &self.cases[case];
-        let flatness = self.solver.flatness(
-            chain.joint(),
-            self.level(),
-            &self.cases[0].conditions.forces,
-        )?;
-        Ok(nominal.solved.pressure(flatness, cone_beside(chain, case)?))
-    }
-
-    /// How the faces meet at a point.
-    pub(super) fn met_at(&self, case: usize, point: [f64; 2]) -> Option<Meeting> {
-        self.cases[case].solved.met_at(point)
-    }
-
-    /// Radius of a bolt's contact, m.
-    pub(super) fn contact_radius(&self, case: usize, bolt: usize) -> f64 {
-        self.cases[case].solved.contact_radius(bolt)
+        let (_, solved) = self.closed(chain, case)?;
+        let first = &self.case(chain, 0)?.conditions;
+        let flatness = self.solver.flatness(chain.joint(), self.level(), first)?;
+        Ok(solved.pressure(flatness, cone_beside(chain, case)?))
     }
 
     /// Where the contact of a case reaches an edge of plate or foot.
-    pub(super) fn pressed_edge(&self, joint: &Joint, case: usize) -> Option<PressedEdge> {
-        self.cases[case].solved.pressed_edge(joint)
+    pub(super) fn pressed_edge(&self, chain: &Chain, case: usize) -> Option<PressedEdge> {
+        let (_, solved) = self.closed(chain, case).ok()?;
+        solved.pressed_edge(chain.joint())
     }
 
-    /// Area of the faying faces, beside feet included, m².
-    pub(super) fn footprint(&self) -> f64 {
-        self.cases[0].solved.footprint()
+    /// How the faces of the first case meet at a point.
+    pub(super) fn met_at(&self, chain: &Chain, point: [f64; 2]) -> Option<Meeting> {
+        self.closed(chain, 0).ok()?.1.met_at(point)
     }
 
-    /// The rings around a bolt at nominal.
-    pub(super) fn rings(&self, case: usize, bolt: usize) -> Vec<RingRow> {
-        self.cases[case].solved.rings(bolt)
+    /// Radius of a bolt's contact, m; not a number where no bolt clamps.
+    pub(super) fn contact_radius(&self, chain: &Chain, (case, bolt): (usize, usize)) -> f64 {
+        self.closed(chain, case)
+            .map_or(f64::NAN, |(_, solved)| solved.contact_radius(bolt))
+    }
+
+    /// Area of the faying faces, beside feet included, m²; not a number where no bolt clamps.
+    pub(super) fn footprint(&self, chain: &Chain) -> f64 {
+        self.closed(chain, 0)
+            .map_or(f64::NAN, |(_, solved)| solved.footprint())
+    }
+
+    /// The rings around a bolt in the first case at nominal.
+    pub(super) fn rings(&self, chain: &Chain, bolt: usize) -> Vec<RingRow> {
+        self.closed(chain, 0)
+            .map_or_else(|_| Vec::new(), |(_, solved)| solved.rings(bolt))
     }
 
     /// The path of a case at one realisation.
     pub(super) fn path(
         &self,
         chain: &Chain,
-        case: usize,
+        index: usize,
         (conditions, at): (&Conditions, &Realisation),
     ) -> Result<Path, Failure> {
-        let nominal = &self.cases[case];
-        if *at == Realisation::default() {
-            return Ok(nominal.solved.path().clone());
+        let case = self.case(chain, index)?;
+        let nominal = *at == Realisation::default();
+        if let (true, Some(solved)) = (nominal, &case.solved) {
+            return Ok(solved.path().clone());
         }
-        let spread = self.spread_of(chain, nominal)?;
-        let from = spread.gauge.departure(&nominal.conditions);
+        let spread = self.spread_of(chain, index)?;
+        let from = spread.gauge.departure(&case.conditions);
         let to = spread.gauge.departure(conditions);
-        let moved = spread.response.applied(nominal.solved.path(), (&from, &to));
-        let form = between(spread.form, at.field) * between(spread.bent, at.flatness);
-        Ok(with_form(moved, form))
+        let Some(solved) = &case.solved else {
+            // Without force in the nominal state there is nothing to move from: the draws and the
+            // nominal stand on the ground level.
+            return Ok(spread.response.alone(&to));
+        };
+        let places = [at.field, at.flatness];
+        Ok(spread.moved(solved.path(), (&from, &to), places))
     }
 
     /// Works out the spread of a case: it runs on all cores itself, so that draws that run side by
     /// side must find it done.
     pub(super) fn expect_draws(&self, chain: &Chain, case: usize) -> Result<(), Failure> {
-        self.spread_of(chain, &self.cases[case]).map(|_| ())
+        self.spread_of(chain, case).map(|_| ())
     }
 
-    fn spread_of<'c>(&self, chain: &Chain, case: &'c Case) -> Result<&'c Spread, Failure> {
-        if let Some(spread) = &case.inherited {
-            return Ok(spread);
-        }
+    fn spread_of(&self, chain: &Chain, index: usize) -> Result<&Spread, Failure> {
+        let case = self.case(chain, index)?;
         let forces: f64 = case.conditions.forces.iter().sum();
-        self.spread_over(chain, case, chain.force_range(case.index, forces))
+        self.spread_over(chain, index, chain.force_range(index, forces))
     }
 
-    /// The spread of a case, worked out over a range of force where it is not known yet.
-    fn spread_over<'c>(
+    /// The spread of a case over a range of force: its own, or that of the chain this one comes
+    /// from where the medium is the same and the forces reach as far.
+    fn spread_over(
         &self,
         chain: &Chain,
-        case: &'c Case,
+        index: usize,
         range: [f64; 2],
-    ) -> Result<&'c Spread, Failure> {
+    ) -> Result<&Spread, Failure> {
+        let case = self.case(chain, index)?;
         case.spread
-            .get_or_init(|| self.spread(chain, case, range).map(Arc::new))
+            .get_or_init(|| {
+                let given = self.parent.get(index).and_then(Option::as_ref);
+                if let Some((medium, spread)) = given
+                    && *medium == self.medium
+                    && spread
+                        .response
+                        .covers(chain.force_range(index, spread.gauge.force()))
+                {
+                    return Ok(spread.clone());
+                }
+                if case.solved.is_none() {
+                    return Err(chain.open(index, &case.conditions.forces));
+                }
+                let first = match index {
+                    0 => None,
+                    _ => self.spread_of(chain, 0).ok(),
+                };
+                self.spread(chain, (index, &case.conditions), (range, first))
+                    .map(Arc::new)
+            })
             .as_deref()
             .map_err(Clone::clone)
-    }
-
-    /// Everything the draws of a case need, on the ground level, over a range of force over the
-    /// nominal.
-    fn spread(&self, chain: &Chain, case: &Case, range: [f64; 2]) -> Result<Spread, Failure> {
-        let base = self.solved(
-            chain,
-            (GROUND, Variant::Stated),
-            (&case.conditions, &Factors::NONE),
-        )?;
-        let gauge = Gauge::of(&case.conditions, base.mean_pressure(), base.gap_mean());
-        let open = self.departed(chain, &case.conditions, &response::open(range))?;
-        let response = Response::through(
-            range,
-            |departures| {
-                departures
-                    .par_iter()
-                    .map(|departure| self.departed(chain, &case.conditions, departure))
-                    .collect::<Result<Vec<Path>, Failure>>()
-            },
-            open,
-        )?;
-        if case.index > 0 {
-            // Ratios hardly know the temperature of the case; the first one's serve all.
-            let first = self.spread_of(chain, &self.cases[0])?;
-            return Ok(Spread {
-                gauge,
-                response,
-                form: first.form,
-                bent: first.bent,
-            });
-        }
-        let ratio = |variant: &Variant| {
-            let solved = self.solved(
-                chain,
-                (GROUND, *variant),
-                (&case.conditions, &Factors::NONE),
-            )?;
-            Ok(solved.path().added_by_joint / base.path().added_by_joint)
-        };
-        let forms = self
-            .solver
-            .forms()
-            .par_iter()
-            .map(ratio)
-            .collect::<Result<Vec<f64>, Failure>>()?;
-        let loose = chain
-            .joint()
-            .plates
-            .iter()
-            .any(|plate| loose_flatness(plate) > 0.0);
-        let bent = if loose {
-            [ratio(&Variant::Bent(-1.0))?, ratio(&Variant::Bent(1.0))?]
-        } else {
-            [1.0; 2]
-        };
-        Ok(Spread {
-            gauge,
-            response,
-            form: [
-                forms.iter().copied().fold(1.0, f64::min),
-                forms.iter().copied().fold(1.0, f64::max),
-            ],
-            bent,
-        })
-    }
-
-    /// The path on the ground level away from nominal.
-    fn departed(
-        &self,
-        chain: &Chain,
-        nominal: &Conditions,
-        departure: &Departure,
-    ) -> Result<Path, Failure> {
-        let [force, touching, parted, warm, cold] = departure.map(f64::exp);
-        let conditions = Conditions {
-            forces: nominal.forces.iter().map(|each| each * force).collect(),
-            ..nominal.clone()
-        };
-        let factors = Factors {
-            touching,
-            parted,
-            conductivity: [warm, cold],
-        };
-        let solved = self.solved(chain, (GROUND, Variant::Stated), (&conditions, &factors))?;
-        Ok(solved.path().clone())
     }
 
     /// Difference of source to sink to the next coarser level, relative, and what that does not
     /// tell of the heat.
     pub(super) fn discretisation_error(&self, chain: &Chain) -> Result<f64, Failure> {
-        let case = &self.cases[0];
+        let (case, solved) = self.closed(chain, 0)?;
         let coarse = self.solved(
             chain,
             (coarser(self.level()), Variant::Stated),
             (&case.conditions, &Factors::NONE),
         )?;
-        let moved = coarse.path().source_to_sink / case.solved.path().source_to_sink - 1.0;
-        Ok(moved.abs() + case.solved.heat_error())
+        let moved = coarse.path().source_to_sink / solved.path().source_to_sink - 1.0;
+        Ok(moved.abs() + solved.heat_error())
     }
 
     /// Tabulates the field of bent faces from the least to the largest factor on the forces of a
-    /// case, on the ground level as far as the draws reach; works out what the draws need there.
+    /// case; works out what the draws need over all of them.
     pub(super) fn tabulate(
         &self,
         chain: &Chain,
-        (case, [low, high]): (usize, [f64; 2]),
+        (index, [low, high]): (usize, [f64; 2]),
     ) -> Result<(), Failure> {
-        let nominal = &self.cases[case];
-        let forces = &nominal.conditions.forces;
+        let (case, _) = self.closed(chain, index)?;
+        let forces = &case.conditions.forces;
         let joint = chain.joint();
-        // Draws go beyond the nominal forces at both ends.
-        let own = chain.force_range(case, forces.iter().sum());
-        let drawn = [low.min(1.0) * own[0], high.max(1.0) * own[1]];
-        if !joint.is_flat() {
+        // With several groups one torque changes the pattern, which no table follows.
+        if !joint.is_flat() && joint.fasteners.len() == 1 {
+            let low = low.max(response::LEAST_FORCE);
             self.solver
                 .tabulate(joint, self.level(), (forces, [low, high]))?;
         }
-        self.spread_over(chain, nominal, drawn)?;
+        // Draws go beyond the nominal forces at both ends.
+        let own = chain.force_range(index, forces.iter().sum());
+        let drawn = [low.min(1.0) * own[0], high.max(1.0) * own[1]];
+        self.spread_over(chain, index, drawn)?;
         Ok(())
     }
 
     /// Share of what the gas takes off the joint's resistance.
     pub(super) fn gas_share(&self, chain: &Chain) -> Result<f64, Failure> {
-        let case = &self.cases[0];
+        let (case, solved) = self.closed(chain, 0)?;
         let mut empty = case.conditions.clone();
         let mut interface: conductance::Interface = empty.faces.local.interface().clone();
         if interface.gas.is_none() {
@@ -365,21 +307,12 @@ impl ElasticModel {
             (self.level(), Variant::Stated),
             (&empty, &Factors::NONE),
         )?;
-        let share = 1.0 - case.solved.path().added_by_joint / empty.path().added_by_joint;
+        let share = 1.0 - solved.path().added_by_joint / empty.path().added_by_joint;
         Ok(if share.is_finite() {
             share.clamp(0.0, 1.0)
         } else {
             1.0
         })
-    }
-}
-
-/// A factor between its ends: straight from the low one to 1 and on to the high one.
-fn between([low, high]: [f64; 2], place: f64) -> f64 {
-    if place < 0.0 {
-        1.0 + place * (1.0 - low)
-    } else {
-        1.0 + place * (high - 1.0)
     }
 }
 

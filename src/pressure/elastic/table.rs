@@ -65,9 +65,9 @@ impl Table {
         let middle = (factor, solve(factor)?);
         let guessed = between(&start, end, factor);
         let error = readings(&guessed)
-            .iter()
+            .into_iter()
             .zip(readings(&middle.1))
-            .map(|(guessed, solved)| (guessed / solved - 1.0).abs())
+            .map(difference)
             .fold(0.0, f64::max);
         if error > tolerance && depth > 0 {
             self.fill(&middle, depth - 1, (tolerance, solve))?;
@@ -122,6 +122,16 @@ fn readings(field: &Field) -> [f64; 3] {
         .map(|(weight, pressure)| weight * pressure.powf(0.95))
         .sum();
     [field.gap_mean(), field.mean_force_radius(), sum]
+}
+
+/// Relative difference of two readings, both at least zero; none where both are zero.
+fn difference((guessed, solved): (f64, f64)) -> f64 {
+    let larger = guessed.max(solved);
+    if larger > 0.0 {
+        (guessed - solved).abs() / larger
+    } else {
+        0.0
+    }
 }
 
 /// Straight between two fields of one grid.

@@ -16,16 +16,16 @@ use crate::{
             elastic::{
                 level::{GROUND, Level},
                 solver::{Factors, Solved, Solver},
-                variant::{Variant, loose_flatness},
+                variant::Variant,
             },
         },
     },
-    joint::Joint,
+    joint::{Compliance, FillerKind, Joint, Plate},
     pressure::elastic::Field,
     resistance::{Path, columns::Heat},
 };
 
-use bank::Bank;
+use bank::{Bank, Wanted};
 use heat::{Conductances, conductances};
 use readings::{initial, widest};
 
@@ -62,6 +62,23 @@ impl Columns {
     }
 }
 
+impl Columns {
+    fn field(
+        &self,
+        joint: &Joint,
+        (level, variant): (Level, Variant),
+        conditions: &Conditions,
+    ) -> Result<Arc<Field>, Failure> {
+        let wanted = Wanted {
+            level,
+            variant,
+            forces: &conditions.forces,
+            asperities: asperities(joint, variant, conditions),
+        };
+        self.bank.field(joint, &wanted)
+    }
+}
+
 impl Solver for Columns {
     fn solved(
         &self,
@@ -69,15 +86,12 @@ impl Solver for Columns {
         (level, variant): (Level, Variant),
         (conditions, factors): (&Conditions, &Factors),
     ) -> Result<Arc<dyn Solved>, Failure> {
-        self.bank.take_asperities(|| asperities(joint, conditions));
-        let field = self
-            .bank
-            .field(joint, (level, variant), &conditions.forces)?;
+        let field = self.field(joint, (level, variant), conditions)?;
         let plates = self.bank.plates(joint, level, &field)?;
         let mut faces: Conductances = conductances(&field, self.bank.order, (conditions, factors));
         let (heat, path) = plates
             .solve(&faces, factors.conductivity(conditions), &conditions.shanks)
-            .map_err(Failure::Plates)?;
+            .map_err(Failure::Heat)?;
         Ok(Arc::new(OnColumns {
             field,
             heat,
@@ -96,24 +110,31 @@ impl Solver for Columns {
         self.bank.tabulate(joint, level, range)
     }
 
-    fn forms(&self) -> &'static [Variant] {
-        &FORMS
+    fn forms(&self, joint: &Joint) -> &'static [Variant] {
+        if bridged(joint) { &FORMS[..2] } else { &FORMS }
     }
 
     /// Flat and bent faces are solved on the ground level; the ratio of its widest gap to that of
     /// the finer field carries them over.
-    fn flatness(&self, joint: &Joint, level: Level, forces: &[f64]) -> Result<Flatness, Failure> {
-        let field = self.bank.field(joint, (level, Variant::Stated), forces)?;
+    fn flatness(
+        &self,
+        joint: &Joint,
+        level: Level,
+        conditions: &Conditions,
+    ) -> Result<Flatness, Failure> {
+        let field = self.field(joint, (level, Variant::Stated), conditions)?;
         let left = widest(&field);
-        let height: f64 = joint.plates.iter().map(loose_flatness).sum();
+        let height: f64 = joint.plates.iter().map(Plate::loose_flatness).sum();
         if joint.is_flat() && height <= 0.0 {
             return Ok(Flatness::Flat);
         }
         let ground = |variant: Variant| {
-            let field = self.bank.field(joint, (GROUND, variant), forces)?;
+            let field = self.field(joint, (GROUND, variant), conditions)?;
             Ok::<f64, Failure>(widest(&field))
         };
-        let carried = left / ground(Variant::Stated)?;
+        let stated = ground(Variant::Stated)?;
+        // Where a pad fills every gap of the stated faces there is nothing to carry over.
+        let carried = if stated > 0.0 { left / stated } else { 1.0 };
         if joint.is_flat() {
             return Ok(Flatness::Stated {
                 height,
@@ -132,15 +153,20 @@ impl Solver for Columns {
     }
 }
 
-/// Pressure over closure of the asperities at the mean pressure under the heads, Pa/m.
+/// Pressure over closure of the asperities at the mean pressure under the heads, Pa/m; none for
+/// hard contact, for faces that a filler parts, and where the peaks are pressed flat.
 ///
 /// ```text
 /// κ = −dp/dY   at p = Σ F/Σ A_seat
 /// ```
 ///
-/// `Y` is the separation of the mean planes by the law of the gap.
-fn asperities(joint: &Joint, conditions: &Conditions) -> f64 {
+/// `Y` is the separation of the mean planes by the law of the gap, which ends where the contact
+/// takes most of the face: nothing is left to yield there.
+fn asperities(joint: &Joint, variant: Variant, conditions: &Conditions) -> Option<f64> {
     const STEP: f64 = 0.05;
+    if variant.compliance(joint) == Compliance::Hard || bridged(joint) {
+        return None;
+    }
     let seats: f64 = joint
         .bolts()
         .map(|(fastener, _)| {
@@ -152,5 +178,14 @@ fn asperities(joint: &Joint, conditions: &Conditions) -> f64 {
     let local = &conditions.faces.local;
     let closure =
         local.separation(pressure * (1.0 - STEP)) - local.separation(pressure * (1.0 + STEP));
-    2.0 * STEP * pressure / closure
+    let stiffness = 2.0 * STEP * pressure / closure;
+    (stiffness.is_finite() && stiffness > 0.0).then_some(stiffness)
+}
+
+/// Whether a layer, a paste or a table stands between the faces, so that no peaks meet.
+fn bridged(joint: &Joint) -> bool {
+    joint
+        .filler
+        .as_ref()
+        .is_some_and(|filler| !matches!(filler.kind, FillerKind::Fluid { .. }))
 }

@@ -20,7 +20,7 @@ const FORCE_STEP: f64 = 0.6;
 const LEAST_REACH: f64 = 0.1;
 /// Least force that is solved, over the nominal: below it the answer is that of this force as long
 /// as any is left.
-const LEAST_FORCE: f64 = 0.02;
+pub(super) const LEAST_FORCE: f64 = 0.02;
 /// Places at which the surfaces are held against direct solutions: force between the ends of its
 /// range, the others in half widths of the design.
 const PROBES: [[f64; VARIABLES]; 4] = [
@@ -96,7 +96,10 @@ impl Gauge {
 /// ln R for contact, perfect contact and what the joint adds;
 /// node to node, interface and hottest as shares of source to sink
 /// ```
-type Readings = [f64; 6];
+///
+/// What the joint adds is read as a logarithm where it is above zero in every solution, and as a
+/// share of source to sink where it is nothing within rounding.
+type Readings = [f64; 7];
 
 /// The answers of one case over a range of force.
 ///
@@ -107,9 +110,12 @@ pub(super) struct Response {
     /// Logarithms of the force over the nominal one, rising.
     forces: Vec<f64>,
     /// One for each force and reading.
-    surfaces: Vec<[Surface; 6]>,
-    /// The path when no force is left and the faces only lie on each other.
-    open: Path,
+    surfaces: Vec<[Surface; 7]>,
+    /// The path when no force is left and the faces only lie on each other; none where no draw
+    /// comes to that.
+    open: Option<Path>,
+    /// The nominal path on the level of the surfaces.
+    base: Path,
     /// Largest error of source to sink at the probes, relative.
     pub(super) error: f64,
 }
@@ -122,7 +128,7 @@ impl Response {
     pub(super) fn through<E>(
         range: [f64; 2],
         solve: impl Fn(&[Departure]) -> Result<Vec<Path>, E>,
-        open: Path,
+        open: Option<Path>,
     ) -> Result<Self, E> {
         let forces = forces(range);
         let whole = design(&STEPS);
@@ -147,17 +153,22 @@ impl Response {
         let paths = solve(&points)?;
         let (designs, probes) = paths.split_at(solutions);
         let read: Vec<Readings> = designs.iter().map(readings).collect();
+        let centre = solutions_at_nominal(&forces, alone);
         let mut response = Self {
             surfaces: surfaces(&forces, &read),
             forces,
             open,
+            base: designs[centre].clone(),
             error: 0.0,
         };
-        let centre = solutions_at_nominal(&response.forces, alone);
         for (path, departure) in probes.iter().zip(&points[solutions..]) {
-            let told = response.applied(&designs[centre], (&[0.0; VARIABLES], departure));
+            let told = response.alone(departure);
             let off = (told.source_to_sink / path.source_to_sink - 1.0).abs();
-            response.error = response.error.max(off);
+            response.error = if off.is_nan() {
+                off
+            } else {
+                response.error.max(off)
+            };
         }
         Ok(response)
     }
@@ -169,19 +180,29 @@ impl Response {
         low.max(LEAST_FORCE).ln() >= ends[0] - ROUNDING && high.ln() <= ends[1] + ROUNDING
     }
 
+    /// The path at a departure on the level of the surfaces themselves.
+    pub(super) fn alone(&self, departure: &Departure) -> Path {
+        self.applied(&self.base, (&[0.0; VARIABLES], departure))
+    }
+
     /// A path of a finer solution at one departure, moved to another as the surfaces say.
     pub(super) fn applied(&self, path: &Path, (from, to): (&Departure, &Departure)) -> Path {
-        if to[0] == f64::NEG_INFINITY {
+        if let (f64::NEG_INFINITY, Some(open)) = (to[0], &self.open) {
             return Path {
                 coolant_drop: path.coolant_drop,
-                ..self.open.clone()
+                ..open.clone()
             };
         }
         let (there, here) = (self.at(to), self.at(from));
-        let [contact, perfect, added, node, interface, hottest]: Readings =
+        let [contact, perfect, added, node, interface, hottest, joint]: Readings =
             std::array::from_fn(|reading| there[reading] - here[reading]);
         let perfect_contact = path.perfect_contact * perfect.exp();
-        let added_by_joint = path.added_by_joint * added.exp();
+        let added_by_joint = if added.is_finite() {
+            path.added_by_joint * added.exp()
+        } else {
+            let share = path.added_by_joint / path.source_to_sink + joint;
+            perfect_contact * share / (1.0 - share)
+        };
         let source_to_sink = perfect_contact + added_by_joint;
         let share = |value: f64, moved: f64| (value / path.source_to_sink + moved) * source_to_sink;
         Path {
@@ -209,7 +230,7 @@ impl Response {
             .unwrap_or(0);
         let first = nearest.clamp(1, last - 1) - 1;
         let nodes = &self.forces[first..first + 3];
-        let mut read = [0.0; 6];
+        let mut read = [0.0; 7];
         for (place, node) in nodes.iter().enumerate() {
             let weight: f64 = nodes
                 .iter()
@@ -222,6 +243,24 @@ impl Response {
         }
         read
     }
+}
+
+/// Solved forces of a range from the nominal one outwards.
+pub(super) fn outwards(range: [f64; 2]) -> Vec<f64> {
+    let mut found = forces(range);
+    found.sort_by(|one, other| one.abs().total_cmp(&other.abs()));
+    found
+}
+
+/// Least, nominal and largest of the solved forces of a range.
+pub(super) fn ends(range: [f64; 2]) -> [f64; 3] {
+    let found = forces(range);
+    [found[0], 0.0, found[found.len() - 1]]
+}
+
+/// A departure of the force alone.
+pub(super) fn at_force(force: f64) -> Departure {
+    at(force, &[0.0; VARIABLES - 1])
 }
 
 /// The departure that stands for no force at all: the least force of a range, with contact that
@@ -262,7 +301,7 @@ fn solutions_at_nominal(forces: &[f64], alone: usize) -> usize {
 }
 
 /// Surfaces through readings that stand force by force.
-fn surfaces(forces: &[f64], read: &[Readings]) -> Vec<[Surface; 6]> {
+fn surfaces(forces: &[f64], read: &[Readings]) -> Vec<[Surface; 7]> {
     let whole = design(&STEPS).len();
     let alone = 1 + 2 * STEPS.len();
     let nominal = solutions_at_nominal(forces, alone);
@@ -270,7 +309,7 @@ fn surfaces(forces: &[f64], read: &[Readings]) -> Vec<[Surface; 6]> {
         let values: Vec<f64> = values.iter().map(|values| values[reading]).collect();
         Surface::through(&STEPS, &values)
     };
-    let centre: [Surface; 6] =
+    let centre: [Surface; 7] =
         std::array::from_fn(|reading| through(reading, &read[nominal..nominal + whole]));
     let mut next = 0;
     forces
@@ -292,10 +331,12 @@ fn readings(path: &Path) -> Readings {
     [
         path.contact.ln(),
         path.perfect_contact.ln(),
-        path.added_by_joint.max(f64::MIN_POSITIVE).ln(),
+        // Not a number where nothing is added; the share at the end serves then.
+        path.added_by_joint.ln(),
         path.node_to_node / whole,
         path.interface_drop / whole,
         path.hottest / whole,
+        path.added_by_joint / whole,
     ]
 }
 

@@ -84,7 +84,7 @@ impl Solver for Round {
             .shape
             .heat(contact.contact_radius, (conductivity, conditions.shanks[0]));
         let plates = kept(&self.plates, &problem, || {
-            heat::condense(&problem).map_err(Failure::Plates)
+            heat::condense(&problem).map_err(Failure::Heat)
         })?;
         let force = conditions.forces[0];
         let touching = conditions.faces.over_many_points(contact.peak(force));
@@ -93,10 +93,10 @@ impl Solver for Round {
             parted: |gap| factors.parted * conditions.faces.local.parted(gap),
         };
         let local = |radius| law.at(&contact, [force, radius]);
-        let heat = plates.solve(local).map_err(Failure::Plates)?;
+        let heat = plates.solve(local).map_err(Failure::Heat)?;
         heat.path
             .checked("heat through the round plates")
-            .map_err(Failure::Plates)?;
+            .map_err(Failure::Heat)?;
         Ok(Arc::new(InRound {
             shape: self.shape,
             force,
@@ -112,12 +112,12 @@ impl Solver for Round {
         Ok(())
     }
 
-    fn forms(&self) -> &'static [Variant] {
+    fn forms(&self, _: &Joint) -> &'static [Variant] {
         &FORMS
     }
 
     /// Faces that are not flat are for the columns.
-    fn flatness(&self, _: &Joint, _: Level, _: &[f64]) -> Result<Flatness, Failure> {
+    fn flatness(&self, _: &Joint, _: Level, _: &Conditions) -> Result<Flatness, Failure> {
         Ok(Flatness::Flat)
     }
 }

@@ -55,10 +55,15 @@ pub(super) trait Solver: Debug + Send + Sync {
     ) -> Result<(), Failure>;
 
     /// What bounds the form of its field.
-    fn forms(&self) -> &'static [Variant];
+    fn forms(&self, joint: &Joint) -> &'static [Variant];
 
-    /// What becomes of bow, map, sag or stated flatness on a level under the forces of the bolts, N.
-    fn flatness(&self, joint: &Joint, level: Level, forces: &[f64]) -> Result<Flatness, Failure>;
+    /// What becomes of bow, map, sag or stated flatness on a level under some conditions.
+    fn flatness(
+        &self,
+        joint: &Joint,
+        level: Level,
+        conditions: &Conditions,
+    ) -> Result<Flatness, Failure>;
 }
 
 /// Contact and heat of a joint under one load.

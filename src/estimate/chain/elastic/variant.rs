@@ -53,7 +53,7 @@ impl Variant {
                 let bent = joint
                     .plates
                     .iter()
-                    .map(|plate| plate.flatness_gap(point, place * loose_flatness(plate)));
+                    .map(|plate| plate.flatness_gap(point, place * plate.loose_flatness()));
                 joint.initial_gap(point) + bent.sum::<f64>()
             }
             _ => joint.initial_gap(point),
@@ -67,15 +67,5 @@ impl Variant {
             Self::Bent(place) => joint.is_flat() && place == 0.0,
             _ => joint.is_flat(),
         }
-    }
-}
-
-/// Out-of-flatness of a face that is stated without its shape, m.
-pub(super) fn loose_flatness(plate: &crate::joint::Plate) -> f64 {
-    let shaped = plate.bow.is_some() || plate.flatness_map.is_some();
-    if shaped {
-        0.0
-    } else {
-        plate.flatness.unwrap_or(0.0)
     }
 }

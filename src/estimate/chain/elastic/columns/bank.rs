@@ -1,6 +1,6 @@
 //! Fields solved so far, so that no field is solved twice.
 
-use std::sync::{Arc, Mutex, OnceLock};
+use std::sync::{Arc, Mutex, MutexGuard, OnceLock, PoisonError};
 
 use crate::{
     estimate::{
@@ -30,18 +30,29 @@ pub(super) struct Bank {
     pub(super) order: Order,
     pub(super) watch: Watch,
     most_bytes: u64,
-    asperities: OnceLock<f64>,
     solved: Mutex<Vec<Solved>>,
     /// Tables over the force, with level and the forces at factor 1.
     tables: Mutex<Vec<(Level, Vec<f64>, Arc<Table>)>>,
     plates: [OnceLock<Arc<Plates>>; 4],
 }
 
+/// A field that is asked for.
+#[derive(Clone, Copy, Debug)]
+pub(super) struct Wanted<'a> {
+    pub(super) level: Level,
+    pub(super) variant: Variant,
+    /// Clamp force of each bolt, N.
+    pub(super) forces: &'a [f64],
+    /// Pressure over closure of the asperities, Pa/m; none where they do not yield.
+    pub(super) asperities: Option<f64>,
+}
+
 #[derive(Clone, Debug)]
 struct Solved {
-    fineness: Level,
+    level: Level,
     variant: Variant,
     forces: Vec<f64>,
+    asperities: Option<f64>,
     field: Arc<Field>,
 }
 
@@ -52,68 +63,55 @@ impl Bank {
             order: Order::of(joint)?,
             watch: watch.clone(),
             most_bytes,
-            asperities: OnceLock::new(),
             solved: Mutex::new(Vec::new()),
             tables: Mutex::new(Vec::new()),
             plates: [const { OnceLock::new() }; 4],
         })
     }
 
-    /// Takes what the asperities yield, Pa/m; the first word counts, so that all fields share it.
-    pub(super) fn take_asperities(&self, stiffness: impl FnOnce() -> f64) {
-        self.asperities.get_or_init(stiffness);
+    fn solved(&self) -> MutexGuard<'_, Vec<Solved>> {
+        self.solved.lock().unwrap_or_else(PoisonError::into_inner)
     }
 
-    /// The field under forces, N: one that is known, one that is known times a factor, or a new one.
+    /// The wanted field: one that is known, one that is known times a factor, or a new one.
     ///
-    /// The contact of flat faces does not depend on the force, so a factor is exact there.
-    pub(super) fn field(
-        &self,
-        joint: &Joint,
-        (fineness, variant): (Level, Variant),
-        forces: &[f64],
-    ) -> Result<Arc<Field>, Failure> {
-        let known: Vec<Solved> = self.solved.lock().map_or_else(
-            |_| Vec::new(),
-            |solved| {
-                solved
-                    .iter()
-                    .filter(|each| each.fineness == fineness && each.variant == variant)
-                    .cloned()
-                    .collect()
-            },
-        );
+    /// The contact of flat faces that yield alike does not depend on the force, so a factor is
+    /// exact there.
+    pub(super) fn field(&self, joint: &Joint, wanted: &Wanted) -> Result<Arc<Field>, Failure> {
+        let known: Vec<Solved> = self
+            .solved()
+            .iter()
+            .filter(|each| each.level == wanted.level && each.variant == wanted.variant)
+            .cloned()
+            .collect();
         for each in &known {
-            match factor(&each.forces, forces) {
+            match factor(&each.forces, wanted.forces) {
+                _ if each.asperities != wanted.asperities => {}
                 Some(factor) if (factor - 1.0).abs() <= SAME_PATTERN => {
                     return Ok(each.field.clone());
                 }
-                Some(factor) if variant.is_flat(joint) => {
+                Some(factor) if wanted.variant.is_flat(joint) => {
                     return Ok(Arc::new(each.field.scaled(factor)));
                 }
                 _ => {}
             }
         }
-        if let Some(field) = self.tabulated((fineness, variant), forces) {
+        if let Some(field) = self.tabulated(wanted) {
             return Ok(field);
         }
-        self.solve(joint, (fineness, variant), (forces, &known))
+        self.solve(joint, wanted, &known)
     }
 
     /// A field between those of a table.
-    fn tabulated(
-        &self,
-        (fineness, variant): (Level, Variant),
-        forces: &[f64],
-    ) -> Option<Arc<Field>> {
-        if variant != Variant::Stated {
+    fn tabulated(&self, wanted: &Wanted) -> Option<Arc<Field>> {
+        if wanted.variant != Variant::Stated || wanted.asperities.is_some() {
             return None;
         }
-        let tables = self.tables.lock().ok()?;
+        let tables = self.tables.lock().unwrap_or_else(PoisonError::into_inner);
         tables
             .iter()
-            .filter(|(level, ..)| *level == fineness)
-            .find_map(|(_, base, table)| table.at(factor(base, forces)?))
+            .filter(|(level, ..)| *level == wanted.level)
+            .find_map(|(_, base, table)| table.at(factor(base, wanted.forces)?))
     }
 
     /// Tabulates the field of faces that are not flat over factors on forces, N; flat ones need
@@ -121,7 +119,7 @@ impl Bank {
     pub(super) fn tabulate(
         &self,
         joint: &Joint,
-        fineness: Level,
+        level: Level,
         (forces, range): (&[f64], [f64; 2]),
     ) -> Result<(), Failure> {
         if Variant::Stated.is_flat(joint) {
@@ -129,13 +127,18 @@ impl Bank {
         }
         let solve = |factor: f64| {
             let scaled: Vec<f64> = forces.iter().map(|force| force * factor).collect();
-            self.field(joint, (fineness, Variant::Stated), &scaled)
-                .map_err(|failure| match failure {
-                    Failure::Contact(found) => found,
-                    other => elastic::Failure::Unsound {
-                        what: other.to_string(),
-                    },
-                })
+            let wanted = Wanted {
+                level,
+                variant: Variant::Stated,
+                forces: &scaled,
+                asperities: None,
+            };
+            self.field(joint, &wanted).map_err(|failure| match failure {
+                Failure::Contact(found) => found,
+                other => elastic::Failure::Unsound {
+                    what: other.to_string(),
+                },
+            })
         };
         let table = Table::over(range, TABLE_ERROR, &solve).map_err(Failure::Contact)?;
         self.watch.tell(&format!(
@@ -143,40 +146,40 @@ impl Bank {
             table.len(),
             table.error
         ));
-        if let Ok(mut tables) = self.tables.lock() {
-            tables.push((fineness, forces.to_vec(), Arc::new(table)));
-        }
+        self.tables
+            .lock()
+            .unwrap_or_else(PoisonError::into_inner)
+            .push((level, forces.to_vec(), Arc::new(table)));
         Ok(())
     }
 
     fn solve(
         &self,
         joint: &Joint,
-        (fineness, variant): (Level, Variant),
-        (forces, known): (&[f64], &[Solved]),
+        wanted: &Wanted,
+        known: &[Solved],
     ) -> Result<Arc<Field>, Failure> {
         let task = Task {
-            variant,
-            fineness,
-            forces,
-            asperities: self.asperities.get().copied().unwrap_or(f64::NAN),
+            variant: wanted.variant,
+            fineness: wanted.level,
+            forces: wanted.forces,
+            asperities: wanted.asperities,
             most_bytes: self.most_bytes,
             watch: &self.watch,
         };
-        let near = nearest(known, forces);
+        let near = nearest(known, wanted.forces);
         let field = with_problem(joint, self.order, &task, |problem| match near {
             Some(near) => elastic::solve_from(problem, &near.field),
             None => elastic::solve(problem),
         });
         let field = Arc::new(field.map_err(Failure::Contact)?);
-        if let Ok(mut solved) = self.solved.lock() {
-            solved.push(Solved {
-                fineness,
-                variant,
-                forces: forces.to_vec(),
-                field: field.clone(),
-            });
-        }
+        self.solved().push(Solved {
+            level: wanted.level,
+            variant: wanted.variant,
+            forces: wanted.forces.to_vec(),
+            asperities: wanted.asperities,
+            field: field.clone(),
+        });
         Ok(field)
     }
 

@@ -1,6 +1,6 @@
 //! Heat through the plates on the grid of the contact.
 
-use std::sync::{Arc, Mutex};
+use std::sync::{Arc, Mutex, PoisonError};
 
 use crate::{
     estimate::chain::{
@@ -30,22 +30,8 @@ pub(super) struct Plates {
     sinks: Vec<columns::Sink>,
     /// Bolts without conductance: places and seats.
     bolts: Vec<Bolt>,
-    /// The last equations, for loads that differ only in the faces.
-    last: Mutex<Option<Kept>>,
     /// Perfect contact met so far.
     perfect: Mutex<Vec<Perfect>>,
-}
-
-/// Equations and the shanks they hold.
-struct Kept {
-    conduction: Conduction,
-    shanks: Vec<f64>,
-}
-
-impl std::fmt::Debug for Kept {
-    fn fmt(&self, out: &mut std::fmt::Formatter<'_>) -> std::fmt::Result {
-        out.debug_struct("Kept").finish_non_exhaustive()
-    }
 }
 
 /// Local conductance of every column of every part of every interface, W/(m² K).
@@ -87,7 +73,6 @@ impl Plates {
             source: source(joint),
             sinks: sinks(joint),
             bolts: bolts(joint),
-            last: Mutex::new(None),
             perfect: Mutex::new(Vec::new()),
         })
     }
@@ -101,26 +86,12 @@ impl Plates {
     ) -> Result<(Heat, Path), resistance::Failure> {
         let conductivity = conductivity.map(Conductivity::isotropic);
         let terminals = self.terminals(shanks);
-        let kept = self
-            .last
-            .lock()
-            .ok()
-            .and_then(|mut kept| kept.take())
-            .filter(|kept| kept.shanks == shanks && kept.conduction.conductivity() == conductivity);
-        let mut kept = match kept {
-            Some(kept) => kept,
-            None => Kept {
-                conduction: Conduction::new(&self.stack, &terminals, &conductivity)?,
-                shanks: shanks.to_vec(),
-            },
-        };
+        // Each load starts afresh, so that the order of the threads moves no digit.
+        let mut conduction = Conduction::new(&self.stack, &terminals, &conductivity)?;
         let (heat, perfect) = rayon::join(
-            || kept.conduction.solve(conductances),
+            || conduction.solve(conductances),
             || self.perfect(&terminals, &conductivity),
         );
-        if let Ok(mut last) = self.last.lock() {
-            *last = Some(kept);
-        }
         let (heat, perfect) = (heat?, perfect?);
         let path = heat.path(&perfect);
         path.checked("heat through the columns")?;
@@ -132,19 +103,13 @@ impl Plates {
         terminals: &Terminals,
         conductivity: &[Conductivity],
     ) -> Result<Perfect, resistance::Failure> {
-        let known = self.perfect.lock().ok().and_then(|known| {
-            known
-                .iter()
-                .find(|perfect| perfect.serves(terminals, conductivity))
-                .cloned()
-        });
-        if let Some(perfect) = known {
-            return Ok(perfect);
+        let known = || self.perfect.lock().unwrap_or_else(PoisonError::into_inner);
+        let serves = |perfect: &&Perfect| perfect.serves(terminals, conductivity);
+        if let Some(perfect) = known().iter().find(serves) {
+            return Ok(perfect.clone());
         }
         let perfect = Perfect::new(&self.stack, terminals, conductivity)?;
-        if let Ok(mut known) = self.perfect.lock() {
-            known.push(perfect.clone());
-        }
+        known().push(perfect.clone());
         Ok(perfect)
     }
 

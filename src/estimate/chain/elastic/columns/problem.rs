@@ -2,7 +2,7 @@
 
 use crate::{
     estimate::{Failure, Watch, chain::elastic::variant::Variant},
-    joint::{self, Compliance, Engagement, FaceFriction, Fastener, HeadModel, Joint, Plate, Zone},
+    joint::{self, Engagement, FaceFriction, Fastener, HeadModel, Joint, Plate, Zone},
     pressure::elastic::{
         self, Annulus, Body, Bolt, Cover, End, Faces, Fineness, Head, Height, Interface, Layer,
         Problem, Progress, Stage,
@@ -16,8 +16,8 @@ pub(super) struct Task<'a> {
     pub(super) fineness: Fineness,
     /// Clamp force of each bolt, N.
     pub(super) forces: &'a [f64],
-    /// Pressure over closure of the asperities, Pa/m.
-    pub(super) asperities: f64,
+    /// Pressure over closure of the asperities, Pa/m; none where they do not yield.
+    pub(super) asperities: Option<f64>,
     pub(super) most_bytes: u64,
     pub(super) watch: &'a Watch,
 }
@@ -194,12 +194,10 @@ fn compliance(joint: &Joint, task: &Task) -> elastic::Compliance {
     if let Some(stiffness) = joint.filler.as_ref().and_then(joint::Filler::stiffness) {
         return elastic::Compliance::Layer { stiffness };
     }
-    match task.variant.compliance(joint) {
-        Compliance::Hard => elastic::Compliance::Hard,
-        Compliance::Asperities => elastic::Compliance::Asperities {
-            stiffness: task.asperities,
-        },
-    }
+    task.asperities
+        .map_or(elastic::Compliance::Hard, |stiffness| {
+            elastic::Compliance::Asperities { stiffness }
+        })
 }
 
 fn bolts(joint: &Joint, order: Order, forces: &[f64]) -> Vec<Bolt> {

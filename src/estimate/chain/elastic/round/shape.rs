@@ -1,10 +1,7 @@
 //! Whether a joint is one bolt in round plates, and the problems that it then is.
 
 use crate::{
-    estimate::chain::elastic::{
-        level::Level,
-        variant::{Variant, loose_flatness},
-    },
+    estimate::chain::elastic::{level::Level, variant::Variant},
     joint::{
         Compliance, Engagement, FaceFriction, Filler, HeadModel, Joint, Outline, Plate, Sink, Zone,
     },
@@ -61,7 +58,7 @@ impl Shape {
             plate.ribs.is_empty()
                 && plate.cutouts.is_empty()
                 && plate.feet.is_none()
-                && loose_flatness(plate) <= 0.0
+                && plate.loose_flatness() <= 0.0
         };
         let round = near(*radius, *other)
             && near(hole, far_hole)

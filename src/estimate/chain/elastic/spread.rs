@@ -1,0 +1,236 @@
+//! How the nominal path moves with a draw: response, model form and flatness over the force.
+
+use rayon::prelude::*;
+
+use crate::{
+    estimate::{
+        Chain, Failure,
+        chain::{
+            conditions::Conditions,
+            elastic::{
+                ElasticModel,
+                level::GROUND,
+                response::{self, Departure, Gauge, Response},
+                solver::Factors,
+                variant::Variant,
+            },
+            form::with_form,
+        },
+    },
+    joint::Plate,
+    resistance::Path,
+};
+
+/// What the draws of a case need.
+#[derive(Clone, Debug)]
+pub(super) struct Spread {
+    pub(super) gauge: Gauge,
+    pub(super) response: Response,
+    bounds: Vec<Bounds>,
+}
+
+/// Bounds at one force, as factors on what the joint adds.
+#[derive(Clone, Copy, Debug)]
+struct Bounds {
+    /// Logarithm of the force over the nominal one.
+    force: f64,
+    /// Least and largest by the opposite choices of heads, friction and asperities.
+    form: [f64; 2],
+    /// Convex and concave; 1 where no flatness is loose.
+    bent: [f64; 2],
+}
+
+impl Spread {
+    /// A path moved from one departure to another, at a place of the model form and of flatness.
+    pub(super) fn moved(
+        &self,
+        path: &Path,
+        (from, to): (&Departure, &Departure),
+        [form, flatness]: [f64; 2],
+    ) -> Path {
+        let moved = self.response.applied(path, (from, to));
+        let bounds = self.bounds_at(to[0]);
+        with_form(
+            moved,
+            between(bounds.form, form) * between(bounds.bent, flatness),
+        )
+    }
+
+    /// Bounds at a force: straight between those that are known, held beyond.
+    fn bounds_at(&self, force: f64) -> Bounds {
+        let right = self
+            .bounds
+            .partition_point(|bounds| bounds.force < force)
+            .min(self.bounds.len() - 1);
+        let (low, high) = (self.bounds[right.saturating_sub(1)], self.bounds[right]);
+        let share = if high.force > low.force {
+            ((force - low.force) / (high.force - low.force)).clamp(0.0, 1.0)
+        } else {
+            1.0
+        };
+        let mix = |a: [f64; 2], b: [f64; 2]| [0, 1].map(|end| a[end] + share * (b[end] - a[end]));
+        Bounds {
+            force,
+            form: mix(low.form, high.form),
+            bent: mix(low.bent, high.bent),
+        }
+    }
+}
+
+/// A factor between its ends: straight from the low one to 1 and on to the high one.
+fn between([low, high]: [f64; 2], place: f64) -> f64 {
+    if place < 0.0 {
+        1.0 + place * (1.0 - low)
+    } else {
+        1.0 + place * (high - 1.0)
+    }
+}
+
+impl ElasticModel {
+    /// The spread of a case around its nominal conditions, on the ground level, over a range of
+    /// force over the nominal.
+    ///
+    /// Contacts are solved one after the other from the nominal force outwards, each on all cores;
+    /// then the heat of all states side by side. So no thread decides where a solution starts.
+    pub(super) fn spread(
+        &self,
+        chain: &Chain,
+        (case, nominal): (usize, &Conditions),
+        (range, known): ([f64; 2], Option<&Spread>),
+    ) -> Result<Spread, Failure> {
+        let stated = (GROUND, Variant::Stated);
+        let base = self.solved(chain, stated, (nominal, &Factors::NONE))?;
+        let gauge = Gauge::of(nominal, base.mean_pressure(), base.gap_mean());
+        for force in response::outwards(range) {
+            let departure = response::at_force(force);
+            self.departed(chain, nominal, &departure)?;
+        }
+        let open = if range[0] <= 0.0 {
+            Some(self.departed(chain, nominal, &response::open(range))?)
+        } else {
+            None
+        };
+        let mut response = Response::through(
+            range,
+            |departures| {
+                departures
+                    .par_iter()
+                    .map(|departure| self.departed(chain, nominal, departure))
+                    .collect::<Result<Vec<Path>, Failure>>()
+            },
+            open,
+        )?;
+        if chain.joint().fasteners.len() > 1 {
+            let error = self.pattern_error(chain, (case, nominal), (&gauge, &response))?;
+            response.error = worse(response.error, error);
+        }
+        let bounds = match known {
+            // Ratios hardly know the temperature of a case; those of the first serve all.
+            Some(known) => known.bounds.clone(),
+            None => response::ends(range)
+                .into_iter()
+                .map(|force| self.bounds(chain, nominal, force))
+                .collect::<Result<Vec<Bounds>, Failure>>()?,
+        };
+        Ok(Spread {
+            gauge,
+            response,
+            bounds,
+        })
+    }
+
+    /// Form and flatness at one force.
+    fn bounds(&self, chain: &Chain, nominal: &Conditions, force: f64) -> Result<Bounds, Failure> {
+        let conditions = under(nominal, force);
+        let added = |variant: Variant| -> Result<f64, Failure> {
+            let solved = self.solved(chain, (GROUND, variant), (&conditions, &Factors::NONE))?;
+            Ok(solved.path().added_by_joint)
+        };
+        let base = added(Variant::Stated)?;
+        let joint = chain.joint();
+        let mut form = [1.0_f64; 2];
+        for variant in self.solver.forms(joint) {
+            let ratio = added(*variant)? / base;
+            form = [form[0].min(ratio), form[1].max(ratio)];
+        }
+        let loose = joint.plates.iter().map(Plate::loose_flatness).sum::<f64>() > 0.0;
+        let bent = if loose {
+            [
+                added(Variant::Bent(-1.0))? / base,
+                added(Variant::Bent(1.0))? / base,
+            ]
+        } else {
+            [1.0; 2]
+        };
+        Ok(Bounds { force, form, bent })
+    }
+
+    /// Error of taking the forces of several groups as one: source to sink at the least and at the
+    /// most force of every group, relative.
+    fn pattern_error(
+        &self,
+        chain: &Chain,
+        (case, nominal): (usize, &Conditions),
+        (gauge, response): (&Gauge, &Response),
+    ) -> Result<f64, Failure> {
+        let stated = (GROUND, Variant::Stated);
+        let base = self.solved(chain, stated, (nominal, &Factors::NONE))?;
+        let mut error = 0.0;
+        for ends in chain.force_ends(case) {
+            let forces = ends
+                .iter()
+                .zip(&nominal.forces)
+                .map(|(end, nominal)| end.max(response::LEAST_FORCE * nominal))
+                .collect();
+            let conditions = Conditions {
+                forces,
+                ..nominal.clone()
+            };
+            let solved = self.solved(chain, stated, (&conditions, &Factors::NONE))?;
+            let from = gauge.departure(nominal);
+            let to = gauge.departure(&conditions);
+            let told = response.applied(base.path(), (&from, &to)).source_to_sink;
+            error = worse(error, (told / solved.path().source_to_sink - 1.0).abs());
+        }
+        Ok(error)
+    }
+
+    /// The path on the ground level away from nominal.
+    fn departed(
+        &self,
+        chain: &Chain,
+        nominal: &Conditions,
+        departure: &Departure,
+    ) -> Result<Path, Failure> {
+        let [force, touching, parted, warm, cold] = *departure;
+        let factors = Factors {
+            touching: touching.exp(),
+            parted: parted.exp(),
+            conductivity: [warm.exp(), cold.exp()],
+        };
+        let conditions = under(nominal, force);
+        let solved = self.solved(chain, (GROUND, Variant::Stated), (&conditions, &factors))?;
+        Ok(solved.path().clone())
+    }
+}
+
+/// Nominal conditions under all forces times a factor, given as its logarithm.
+fn under(nominal: &Conditions, force: f64) -> Conditions {
+    Conditions {
+        forces: nominal
+            .forces
+            .iter()
+            .map(|each| each * force.exp())
+            .collect(),
+        ..nominal.clone()
+    }
+}
+
+/// The larger of two errors; not a number where one of them is none.
+fn worse(one: f64, other: f64) -> f64 {
+    if one.is_nan() || other.is_nan() {
+        f64::NAN
+    } else {
+        one.max(other)
+    }
+}
