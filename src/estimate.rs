@@ -106,6 +106,15 @@ pub enum Failure {
     /// The elastic contact has no field.
     #[error("the elastic contact has no field: {0}")]
     Contact(pressure::elastic::Failure),
+    /// The faces do not carry the bolts.
+    #[error(
+        "the faces carry {:.0} % of the clamp force: bolts press where no faces meet, so the plates would tilt or bend away; put feet or plate under every bolt",
+        100.0 * share
+    )]
+    Unbalanced {
+        /// Force between the faces over the clamp force, 1.
+        share: f64,
+    },
     /// Bolts thread into both plates from opposite sides.
     #[error(
         "bolts thread into both plates from opposite sides; the elastic field takes threads in one of them"

@@ -508,7 +508,7 @@ fn a_solved_field_is_told_in_four_lines() {
         [
             "pressure: 61.20 MPa at most, contact on 950.0 mm², 95 % of the force within 6.200 mm of a bolt axis",
             "mean radius of the force 4.900 mm; gap between the faces 3.210 µm mean, 5.600 µm widest",
-            "initial gap of 30 µm closes: 5.600 µm at the widest are left, 5.700 µm were the faces flat",
+            "initial gap of 30 µm closes: the bolts leave 5.600 µm at the widest, between flat faces 5.700 µm",
             "cone: 95 % within 6.014 mm (−3 %), contact only 0.005200 (+4 %), source to sink 0.2650 K/W (+6 %)",
         ]
     );
@@ -523,7 +523,7 @@ fn a_shape_that_stays_open_is_called_so() {
     };
     let report = text::estimate(&solved(wide));
     assert!(
-        report.contains("initial gap of 300 µm stays open: 210.0 µm at the widest"),
+        report.contains("initial gap of 300 µm stays open: the bolts leave 210.0 µm at the widest"),
         "{report}"
     );
     let report = text::estimate(&solved(STATED));

@@ -12,3 +12,5 @@ mod joints;
 mod laws;
 #[path = "validation_columns/shapes.rs"]
 mod shapes;
+#[path = "validation_columns/tables.rs"]
+mod tables;

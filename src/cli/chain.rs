@@ -97,11 +97,12 @@ impl From<Failure> for Trouble {
                     "estimate it with `--field elastic`; `ringsum explain {BEYOND_CONE}` tells more"
                 )),
             },
-            Failure::Contact(Contact::TooLarge { .. }) => Self::Usage {
+            Failure::Contact(Contact::TooLarge { bytes, .. }) => Self::Usage {
                 message: failure.to_string(),
-                help: Some(
-                    "allow more with `--memory \"2 GB\"`, or take `--resolution fast`".to_owned(),
-                ),
+                help: Some(format!(
+                    "allow more with `--memory \"{} MB\"`, or take `--resolution fast`",
+                    bytes.div_ceil(1_000_000)
+                )),
             },
             _ => Self::Failure(failure.to_string()),
         }

@@ -35,7 +35,14 @@ pub fn field_map(chain: &Chain, columns: usize) -> Result<FieldMap, Failure> {
                     _ => faces(met.pressure),
                 }));
             if let Some(gaps) = &mut map.gap {
-                gaps.push(met.and_then(|met| met.gap).unwrap_or(f64::NAN));
+                // Beside feet the gap is their height, which would drown the gaps under them.
+                let on_feet = chain
+                    .joint()
+                    .plates
+                    .iter()
+                    .all(|plate| plate.stands_at([x, y]));
+                let gap = met.filter(|_| on_feet).and_then(|met| met.gap);
+                gaps.push(gap.unwrap_or(f64::NAN));
             }
         }
     }

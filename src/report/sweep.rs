@@ -148,7 +148,8 @@ fn advice(sweep: &TorqueSweep, best: Option<usize>, stated: Option<usize>) -> St
     let gain = stated.map_or_else(String::new, |stated| {
         let there = sweep.points[stated].source_to_sink.nominal;
         let gain = 1.0 - point.source_to_sink.nominal / there;
-        format!(", {} below the stated torque", percent(gain))
+        let side = if gain < 0.0 { "above" } else { "below" };
+        format!(", {} {side} that of the stated torque", percent(gain.abs()))
     });
     let mut text = format!(
         "best     {} N·m: lowest source to sink that strength allows here{gain}\n",

@@ -210,3 +210,34 @@ fn torque_in_air_knows_that_the_gap_grows() {
     // More force opens the gap beside the bolts, and in air that costs more than the contact gains.
     assert!(whole[4] > 1.01 * whole[1], "{whole:?}");
 }
+
+#[test]
+fn threads_change_no_digit_and_fillers_have_their_draws() {
+    let folder = bench();
+    let run = |threads: &str, set: &str| {
+        stdout(
+            &within(&folder)
+                .env("RAYON_NUM_THREADS", threads)
+                .args([
+                    "estimate",
+                    "two.toml",
+                    "--field",
+                    "elastic",
+                    "--resolution",
+                    "fast",
+                ])
+                .args(["--draws", "20", "--json", "--set", set])
+                .assert()
+                .code(0),
+        )
+    };
+    for set in [
+        "plate.upper.finish.flatness=\"20 µm\"",
+        "plate.upper.bow={ kind = \"concave\", height = \"15 µm\" }",
+        "filler.name=\"graphite foil\"",
+    ] {
+        let one = run("1", set);
+        assert!(one == run("2", set), "{set}");
+        assert!(one.contains("\"draw_error\": 0."), "{set}: {one}");
+    }
+}

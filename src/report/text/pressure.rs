@@ -14,10 +14,17 @@ use std::fmt::Write;
 /// Pressure, and for a solved field gap, flatness and the cone beside; a line each.
 pub fn field(case: &CaseResult, detail: Detail) -> String {
     let pressure = &case.pressure;
+    let (peak, area) = (pressure.peak / 1e6, pressure.contact_area * 1e6);
+    // On a solved field the grid scatters both by a tenth and more.
+    let [peak, area] = match pressure.solved {
+        Some(_) => [
+            format!("about {}", two(peak)),
+            format!("about {}", two(area)),
+        ],
+        None => [four(peak), four(area)],
+    };
     let mut text = format!(
-        "pressure: {} MPa at most, contact on {} mm², 95 % of the force within {} mm of a bolt axis\n",
-        four(pressure.peak / 1e6),
-        four(pressure.contact_area * 1e6),
+        "pressure: {peak} MPa at most, contact on {area} mm², 95 % of the force within {} mm of a bolt axis\n",
         four(pressure.radius_95 * 1e3),
     );
     let mut line = |line: String| {
@@ -61,6 +68,15 @@ pub fn field(case: &CaseResult, detail: Detail) -> String {
     text
 }
 
+/// Two digits.
+fn two(value: f64) -> String {
+    if !value.is_finite() || value <= 0.0 {
+        return four(value);
+    }
+    let step = 10.0_f64.powf(value.log10().floor() - 1.0);
+    brief((value / step).round() * step)
+}
+
 /// Whether faces that are not flat are pressed together.
 fn flatness(flatness: &Flatness) -> Option<String> {
     let verdict = if flatness.closes()? {
@@ -76,7 +92,7 @@ fn flatness(flatness: &Flatness) -> Option<String> {
             left,
             flat,
         } => format!(
-            "initial gap of {} µm {verdict}: {} µm at the widest are left, {} µm were the faces flat",
+            "initial gap of {} µm {verdict}: the bolts leave {} µm at the widest, between flat faces {} µm",
             brief(initial * 1e6),
             micrometres(left),
             micrometres(flat)

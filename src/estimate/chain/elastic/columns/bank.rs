@@ -20,6 +20,9 @@ use crate::{
 
 /// Relative difference of two force patterns below which one is the other times a factor.
 const SAME_PATTERN: f64 = 1e-9;
+/// Share of the clamp force that the faces may miss; more means that nothing holds the plates
+/// against each other.
+const BALANCE: f64 = 1e-3;
 /// Error allowed in the middle of an interval of a table over force; half of it or less is left
 /// once the middle is a node.
 const TABLE_ERROR: f64 = 0.01;
@@ -173,6 +176,12 @@ impl Bank {
             None => elastic::solve(problem),
         });
         let field = Arc::new(field.map_err(Failure::Contact)?);
+        let health = &field.health;
+        if health.force_balance.abs() > BALANCE {
+            return Err(Failure::Unbalanced {
+                share: 1.0 + health.force_balance,
+            });
+        }
         self.solved().push(Solved {
             level: wanted.level,
             variant: wanted.variant,

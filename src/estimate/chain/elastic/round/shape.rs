@@ -178,7 +178,6 @@ mod tests {
             "contact.head_model=rigid",
             "contact.faces=stuck",
             "service.medium=air",
-            "filler={ name = \"graphite foil\" }",
             "plate.lower.cooled={ film = \"2000 W/(m²·K)\" }",
         ] {
             assert!(shape(&[set]).is_some(), "{set}");
