@@ -506,7 +506,7 @@ fn a_solved_field_is_told_in_four_lines() {
     assert_eq!(
         pressure_lines(&report),
         [
-            "pressure: 61.20 MPa at most, contact on 950.0 mm², 95 % of the force within 6.200 mm of a bolt axis",
+            "pressure: about 61 MPa at most on about 950 mm², 95 % of the force within 6.200 mm of a bolt axis",
             "mean radius of the force 4.900 mm; gap between the faces 3.210 µm mean, 5.600 µm widest",
             "initial gap of 30 µm closes: the bolts leave 5.600 µm at the widest, between flat faces 5.700 µm",
             "cone: 95 % within 6.014 mm (−3 %), contact only 0.005200 (+4 %), source to sink 0.2650 K/W (+6 %)",

@@ -149,7 +149,7 @@ fn advice(sweep: &TorqueSweep, best: Option<usize>, stated: Option<usize>) -> St
         let there = sweep.points[stated].source_to_sink.nominal;
         let gain = 1.0 - point.source_to_sink.nominal / there;
         let side = if gain < 0.0 { "above" } else { "below" };
-        format!(", {} {side} that of the stated torque", percent(gain.abs()))
+        format!(", {} {side} the stated torque", percent(gain.abs()))
     });
     let mut text = format!(
         "best     {} N·m: lowest source to sink that strength allows here{gain}\n",

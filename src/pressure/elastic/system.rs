@@ -20,12 +20,13 @@ const GROUND: f64 = 1e-6;
 const GROUND_ABOVE: f64 = 1e-9;
 /// Stiffness of stuck faces along themselves, Pa/m.
 const STUCK: f64 = 1e14;
-/// Stiffness of a rigid head against the plate over Young's modulus per spacing of the lines.
+/// Stiffness of a rigid head against the plate over `E/(1 − ν²)` per spacing of the lines.
 ///
 /// Columns just outside a seat hold a little of its area; a harder seat would hold them down as well and
-/// so act as a wider one. With this value the change of gap and force radius from uniform to rigid is
-/// that of a round pair within a tenth of it at every fineness, and the seat hardens with the grid.
-const SEATED: f64 = 2.4;
+/// so act as a wider one, a softer one as a narrower. What is left of that is an affair of the seat's edge
+/// alone, which knows the plane modulus and the spacing but not the joint; so one number serves all plates.
+/// Half and twice of it move the gap by 5 % at the finest grid, and the seat hardens with the grid.
+const SEATED: f64 = 2.1;
 /// Tension of the membrane that makes a head rigid over Young's modulus times bearing radius.
 const MEMBRANE: f64 = 30.0;
 /// Points around the wall of a thread.
@@ -178,12 +179,13 @@ impl System {
             }
             Head::Rigid => {
                 let loose = last + 1;
-                let outside = [&problem.bodies[0], &problem.bodies[last]]
-                    .map(|body| body.layers[body.main].youngs_modulus);
+                let outside =
+                    [&problem.bodies[0], &problem.bodies[last]].map(|body| &body.layers[body.main]);
                 let head = self.operator.unknown(loose, 0, 0);
-                let of = |youngs_modulus: f64| Rigidity {
-                    tension: MEMBRANE * youngs_modulus * problem.bearing_radius(),
-                    stiffness: SEATED * youngs_modulus / resolution::finest_spacing(problem),
+                let of = |plate: &Material| Rigidity {
+                    tension: MEMBRANE * plate.youngs_modulus * problem.bearing_radius(),
+                    plane_modulus: plate.youngs_modulus / (1.0 - plate.poisson.powi(2)),
+                    spacing: resolution::finest_spacing(problem),
                 };
                 self.add_load(&heads, head);
                 let rigid = (head, of(outside[0]));
@@ -222,6 +224,8 @@ impl System {
                 .collect(),
         });
         let columns = mesh.plan.columns();
+        let weight = seats.region.weights(&mesh.plan).into_iter();
+        let finest = rigidity.spacing;
         let tie = self.operator.add_tie(Tie {
             plus,
             minus: Some(minus),
@@ -230,9 +234,13 @@ impl System {
         self.pairings.push(Pairing {
             plus,
             minus,
-            weight: seats.region.weights(&mesh.plan),
+            // Every column yields by its own spacing: bolts of one joint have seats of several widths.
+            weight: weight
+                .zip(spacings(&mesh.plan))
+                .map(|(area, own)| area * finest / own)
+                .collect(),
             opening: vec![0.0; columns],
-            stiffness: rigidity.stiffness,
+            stiffness: SEATED * rigidity.plane_modulus / finest,
             tie,
             shear: None,
         });
@@ -284,8 +292,10 @@ impl System {
 struct Rigidity {
     /// Tension of its membrane, N/m.
     tension: f64,
-    /// Pressure over closure between it and the plate, Pa/m.
-    stiffness: f64,
+    /// `E/(1 − ν²)` of the plate under it, Pa.
+    plane_modulus: f64,
+    /// Spacing of the lines where they are finest, m.
+    spacing: f64,
 }
 
 /// Rings that press on one face.
@@ -338,6 +348,23 @@ fn ring_weights(plan: &Plan, [x, y]: [f64; 2], radius: f64) -> Vec<(usize, f64)>
         })
         .flatten()
         .map(|(column, weight)| (column, weight * part))
+        .collect()
+}
+
+/// Spacing of the lines about every column, the geometric mean of both directions, m.
+fn spacings(plan: &Plan) -> Vec<f64> {
+    let along = |lines: &[f64]| -> Vec<f64> {
+        let last = lines.len() - 1;
+        (0..=last)
+            .map(|line| {
+                let (before, after) = (line.saturating_sub(1), (line + 1).min(last));
+                (lines[after] - lines[before]) / (after - before) as f64
+            })
+            .collect()
+    };
+    let (x, y) = (along(&plan.x), along(&plan.y));
+    x.iter()
+        .flat_map(|x| y.iter().map(move |y| (x * y).sqrt()))
         .collect()
 }
 

@@ -19,12 +19,12 @@ pub fn field(case: &CaseResult, detail: Detail) -> String {
     let [peak, area] = match pressure.solved {
         Some(_) => [
             format!("about {}", two(peak)),
-            format!("about {}", two(area)),
+            format!(" on about {}", two(area)),
         ],
-        None => [four(peak), four(area)],
+        None => [four(peak), format!(", contact on {}", four(area))],
     };
     let mut text = format!(
-        "pressure: {peak} MPa at most, contact on {area} mm², 95 % of the force within {} mm of a bolt axis\n",
+        "pressure: {peak} MPa at most{area} mm², 95 % of the force within {} mm of a bolt axis\n",
         four(pressure.radius_95 * 1e3),
     );
     let mut line = |line: String| {
