@@ -5,8 +5,8 @@ of the interface and an active set over them. A thread is uniform shear on the w
 from the faying face. Lower plate from -t2 to 0, upper one from 0 to t1.
 
 Reads one JSON object on standard input: hole, bearing, rim, thickness (two), modulus (two), poisson, thread (length
-or null), head ("uniform" or "rigid"), faces ("frictionless" or "stuck"), rings, far, size; lengths in mm, stresses in MPa. Prints
-one: shares of the force inside each of the rings, radius of 95 % of it, radius where the faces part, gap at each far
+or null), head ("uniform" or "rigid"), faces ("frictionless" or "stuck"), rings, far, size; lengths in mm, stresses in
+MPa. Prints one: shares of the force inside each of the rings, radius of 95 % of it, radius where the faces part, gap at each far
 radius in µm for 1 kN.
 """
 import json
@@ -62,7 +62,8 @@ def solved(job):
     radii = joined([(a, fine, 3 * fine), (b, fine, 3 * fine), (far, 3 * fine, 1.0), (rim, 1.0, 1.0)])
     up = joined([(0.0, fine, 0.25 * t1), (t1, 2 * fine, 0)])
     length = job["thread"]
-    marks = [(0.0, fine, 0.2 * t2)] + ([(length, 2 * fine, 0.2 * t2)] if length and length < t2 else []) + [(t2, 2 * fine, 0)]
+    end = [(length, 2 * fine, 0.2 * t2)] if length and length < t2 else []
+    marks = [(0.0, fine, 0.2 * t2)] + end + [(t2, 2 * fine, 0)]
     down = -joined(marks)[::-1]
     upper = Plate(radii, up, 0.0, job["modulus"][0], job["poisson"])
     lower = Plate(radii, down, 0.0, job["modulus"][1], job["poisson"])

@@ -25,7 +25,7 @@ const STUCK: f64 = 1e14;
 /// Columns just outside a seat hold a little of its area; a harder seat would hold them down as well and
 /// so act as a wider one, a softer one as a narrower. What is left of that is an affair of the seat's edge
 /// alone, which knows the plane modulus and the spacing but not the joint; so one number serves all plates.
-/// Half and twice of it move the gap by 5 % at the finest grid, and the seat hardens with the grid.
+/// Half and twice of it move the gap by 4 to 5 % at the finest grid, and the seat hardens with the grid.
 const SEATED: f64 = 2.1;
 /// Tension of the membrane that makes a head rigid over Young's modulus times bearing radius.
 const MEMBRANE: f64 = 30.0;
