@@ -12,13 +12,13 @@ use std::io::{self, IsTerminal, Write};
 pub struct Field {
     /// Pressure field: cone (closed form) or elastic (solved, with gap, bow and edges)
     #[arg(
-        long,
+        long = "field",
         value_enum,
         value_name = "FIELD",
         default_value = "cone",
         hide_possible_values = true
     )]
-    field: Kind,
+    kind: Kind,
     /// How finely the elastic field is solved: fast, normal or fine [default: normal]
     #[arg(long, value_enum, value_name = "LEVEL", hide_possible_values = true)]
     resolution: Option<Level>,
@@ -51,7 +51,7 @@ enum Level {
 impl Field {
     /// The same for the chain; what belongs to the elastic field alone is refused beside the cone.
     pub fn choice(self) -> Result<Choice, Trouble> {
-        match self.field {
+        match self.kind {
             Kind::Cone if self.resolution.is_some() || self.memory.is_some() => {
                 Err(Trouble::usage(
                     "--resolution and --memory speak of the elastic field",

@@ -43,7 +43,7 @@ enum Model {
     /// Closed form and networks.
     Cone(ConeModel),
     /// Elastic contact and conduction of the whole plates.
-    Elastic(ElasticModel),
+    Elastic(Box<ElasticModel>),
 }
 
 /// One run through the chain.
@@ -98,9 +98,9 @@ impl<'a> Chain<'a> {
             group_of,
             model: match choice {
                 Choice::Cone => Model::Cone(ConeModel::new(joint)?),
-                Choice::Elastic { fineness, memory } => {
-                    Model::Elastic(ElasticModel::new(joint, (fineness, memory), watch)?)
-                }
+                Choice::Elastic { fineness, memory } => Model::Elastic(Box::new(
+                    ElasticModel::new(joint, (fineness, memory), watch)?,
+                )),
             },
         };
         chain.model = chain.levelled()?;
@@ -111,7 +111,7 @@ impl<'a> Chain<'a> {
     fn levelled(&self) -> Result<Model, Failure> {
         Ok(match &self.model {
             Model::Cone(model) => Model::Cone(model.levelled(self)?),
-            Model::Elastic(model) => Model::Elastic(model.levelled(self)),
+            Model::Elastic(model) => Model::Elastic(Box::new(model.levelled(self))),
         })
     }
 

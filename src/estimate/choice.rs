@@ -48,7 +48,10 @@ impl Choice {
 
 /// Who is told how far a long solution has come.
 #[derive(Clone, Default)]
-pub struct Watch(Option<Arc<dyn Fn(&str) + Send + Sync>>);
+pub struct Watch(Option<Arc<Tell>>);
+
+/// Takes a line of text.
+type Tell = dyn Fn(&str) + Send + Sync;
 
 impl Watch {
     /// Nobody.

@@ -234,8 +234,9 @@ impl Response {
         for (place, node) in nodes.iter().enumerate() {
             let weight: f64 = nodes
                 .iter()
-                .filter(|other| *other != node)
-                .map(|other| (force - other) / (node - other))
+                .enumerate()
+                .filter(|(other, _)| *other != place)
+                .map(|(_, other)| (force - other) / (node - other))
                 .product();
             for (sum, surface) in read.iter_mut().zip(&self.surfaces[first + place]) {
                 *sum += weight * surface.at(rest);

@@ -35,7 +35,7 @@ pub(super) struct Bank {
     most_bytes: u64,
     solved: Mutex<Vec<Solved>>,
     /// Tables over the force, with level and the forces at factor 1.
-    tables: Mutex<Vec<(Level, Vec<f64>, Arc<Table>)>>,
+    tables: Mutex<Vec<Tabulated>>,
     plates: [OnceLock<Arc<Plates>>; 4],
 }
 
@@ -49,6 +49,9 @@ pub(super) struct Wanted<'a> {
     /// Pressure over closure of the asperities, Pa/m; none where they do not yield.
     pub(super) asperities: Option<f64>,
 }
+
+/// A table with its level and the forces at factor 1, N.
+type Tabulated = (Level, Vec<f64>, Arc<Table>);
 
 #[derive(Clone, Debug)]
 struct Solved {
