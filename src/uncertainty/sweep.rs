@@ -61,7 +61,8 @@ pub fn sweep_along(chain: &Chain, options: &SweepOptions) -> Result<TorqueSweep,
     if !(0.0 < from && from < to && to.is_finite() && options.steps >= 2) {
         return Err(Failure::SweepRange { from, to });
     }
-    if options.steps > FEW_STEPS {
+    // Without draws every torque is solved for itself, which is soon done.
+    if options.steps > FEW_STEPS && options.chain.draws > 0 {
         chain.expect_torques((case, options.group), [from, to])?;
     }
     let points = (0..options.steps)
