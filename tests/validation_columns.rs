@@ -5,6 +5,8 @@
 //! study, found with columns. Single bolts in `data/single_bolt.json` were computed for this project with
 //! scikit-fem (`benches/peer/thread_contact.py`), which meets the round solver with a nut to 3e-4 of the force.
 
+#[path = "validation_columns/awkward.rs"]
+mod awkward;
 #[path = "validation_columns/cases.rs"]
 mod cases;
 #[path = "validation_columns/joints.rs"]

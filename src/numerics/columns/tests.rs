@@ -188,6 +188,7 @@ fn a_slab_with_a_hole_adds_its_resistances() {
     let mut rise = operator.zeros();
     let effort = Effort {
         tolerance: 1e-14,
+        energy: None,
         ..Effort::default()
     };
     conjugate_gradients(&operator, &mut multigrid, (&load, &mut rise), &effort).unwrap();
@@ -254,6 +255,7 @@ fn manufactured_error(parts: usize, degree: usize) -> f64 {
     let mut found = operator.zeros();
     let effort = Effort {
         tolerance: 1e-13,
+        energy: None,
         ..Effort::default()
     };
     conjugate_gradients(&operator, &mut multigrid, (&load, &mut found), &effort).unwrap();

@@ -65,6 +65,7 @@ fn solved(operator: &Operator<Solid>, load: &[f64]) -> (Solved, Vec<f64>) {
     let mut x = operator.zeros();
     let effort = Effort {
         tolerance: 1e-10,
+        energy: None,
         ..Effort::default()
     };
     let solved = conjugate_gradients(operator, &mut multigrid, (load, &mut x), &effort).unwrap();
@@ -131,6 +132,7 @@ fn a_single_level_is_solved_at_once() {
     let mut x = operator.zeros();
     let effort = Effort {
         tolerance: 1e-9,
+        energy: None,
         ..Effort::default()
     };
     let solved = conjugate_gradients(&operator, &mut multigrid, (&load, &mut x), &effort).unwrap();

@@ -1,14 +1,19 @@
 //! Newton steps of the contact: which columns touch, and the displacements then.
 
+mod course;
+mod descent;
+
 use crate::{
     numerics::multigrid::{Coarsening, Effort, Factor, Multigrid, Stalled, conjugate_gradients},
     numerics::{banded::NotPositiveDefinite, columns::Solid},
     pressure::elastic::{
-        Faces, Failure, Field, Health, Mesh, Problem, Stage,
+        Failure, Field, Head, Health, Mesh, Problem, Stage,
         field::State,
         system::{Pairing, System, stuck},
     },
 };
+
+use course::{Course, MOST_STEPS};
 
 /// Where the active set starts.
 pub(super) enum Start<'a> {
@@ -20,24 +25,16 @@ pub(super) enum Start<'a> {
     Set(&'a (dyn Fn([f64; 2]) -> bool + Sync)),
 }
 
-/// Steps after which the contact counts as not found.
-const MOST_STEPS: usize = 40;
 /// Iterations of one linear solution after which it counts as stalled.
 const MOST_ITERATIONS: usize = 400;
-/// Residuals of the linear solutions over the load: the first, while many columns change, when few
-/// do, and the last.
-const FIRST: f64 = 1e-2;
-const MANY_CHANGE: f64 = 3e-3;
-const FEW_CHANGE: f64 = 3e-4;
-const LAST: f64 = 1e-7;
-/// Changes that count as many.
-const MANY: usize = 30;
 /// Share of the active set that may change before the coarsest factor follows.
 const LAZY: f64 = 0.05;
 /// How far contact is expected beyond the bearing radius, in thinner plates.
 const EXPECTED: f64 = 0.6;
-/// Rise of the energy, relative to its size, that counts as rounding or an unfinished solution.
-const LEVEL: f64 = 1e-9;
+/// Share of its energy norm at the start that the error of a linear solution keeps, but for the last.
+const SOFT_MOTIONS: f64 = 1e-2;
+/// Changes of a column in accurate solutions after which stuck faces slide there.
+const WAVERING: u8 = 3;
 
 /// Everything that changes from step to step.
 struct Search<'a> {
@@ -50,6 +47,10 @@ struct Search<'a> {
     energy: f64,
     worst_rise: f64,
     shortened: usize,
+    /// Stiffness of the faces over the stated one, 1 in the end.
+    hardness: f64,
+    /// How often a column has changed in accurate solutions.
+    changes: Vec<Vec<u8>>,
 }
 
 pub(super) fn solve(
@@ -71,8 +72,16 @@ pub(super) fn solve(
         Some(state) if state.displacement.len() == system.load.len() => state.displacement.clone(),
         _ => system.operator.zeros(),
     };
-    for (pairing, active) in (0..system.pairings.len()).zip(&active) {
-        set_ties(problem, &mut system, pairing, active);
+    let heads_rock = problem.head == Head::Rigid && previous.is_none();
+    let hardness = Course::new(heads_rock).hardness;
+    let changes: Vec<Vec<u8>> = active.iter().map(|set| vec![0; set.len()]).collect();
+    for (index, active) in active.iter().enumerate() {
+        set_ties(
+            problem,
+            &mut system,
+            index,
+            (active, &changes[index], hardness),
+        );
     }
     let multigrid = Multigrid::new(&system.operator, coarsening(problem)).map_err(indefinite)?;
     let mut search = Search {
@@ -85,6 +94,8 @@ pub(super) fn solve(
         energy: f64::INFINITY,
         worst_rise: 0.0,
         shortened: 0,
+        hardness,
+        changes,
     };
     let (steps, residual) = search.run()?;
     search.field(mesh, steps, residual)
@@ -156,7 +167,14 @@ fn first_set(problem: &Problem, mesh: &Mesh, system: &System, start: &Start) -> 
 }
 
 /// Gives the ties of a pair the stiffness of its touching columns.
-fn set_ties(problem: &Problem, system: &mut System, index: usize, active: &[bool]) {
+///
+/// Columns at the edge of contact press too little to hold by friction: those that waver slide.
+fn set_ties(
+    problem: &Problem,
+    system: &mut System,
+    index: usize,
+    (active, changes, hardness): (&[bool], &[u8], f64),
+) {
     let Pairing {
         weight,
         stiffness,
@@ -164,16 +182,24 @@ fn set_ties(problem: &Problem, system: &mut System, index: usize, active: &[bool
         shear,
         ..
     } = &system.pairings[index];
-    let strength = |stiffness: f64| -> Vec<f64> {
-        active
-            .iter()
-            .zip(weight)
-            .map(|(active, weight)| if *active { stiffness * weight } else { 0.0 })
+    let strength = |stiffness: f64, holds: &dyn Fn(usize) -> bool| -> Vec<f64> {
+        let columns = weight.iter().enumerate();
+        columns
+            .map(|(column, weight)| {
+                if active[column] && holds(column) {
+                    hardness * stiffness * weight
+                } else {
+                    0.0
+                }
+            })
             .collect()
     };
-    system.operator.set_tie(*tie, &strength(*stiffness));
+    system
+        .operator
+        .set_tie(*tie, &strength(*stiffness, &|_| true));
     if let (Some(ties), Some(interface)) = (shear, problem.interfaces.get(index)) {
-        let strength = strength(stuck(interface.compliance));
+        let sticks = |column: usize| changes[column] < WAVERING;
+        let strength = strength(stuck(interface.compliance), &sticks);
         for tie in ties {
             system.operator.set_tie(*tie, &strength);
         }
@@ -183,45 +209,64 @@ fn set_ties(problem: &Problem, system: &mut System, index: usize, active: &[bool
 impl Search<'_> {
     /// Steps until the set repeats; steps taken and the last residual.
     fn run(&mut self) -> Result<(usize, f64), Failure> {
-        let scale = self.load_length();
-        let mut tolerance = FIRST;
+        let mut course = Course::new(self.hardness < 1.0);
         let mut changed = usize::MAX;
-        for step in 1..=MOST_STEPS {
-            let target = self.target();
-            let before = self.displacement.clone();
-            let effort = Effort {
-                tolerance,
-                reference: Some(scale),
-                most: MOST_ITERATIONS,
-            };
-            let solved = conjugate_gradients(
-                &self.system.operator,
-                &mut self.multigrid,
-                (&target, &mut self.displacement),
-                &effort,
-            )
-            .map_err(stalled)?;
-            self.iterations += solved.iterations;
-            self.descend(&before);
-            let sets = self.touching();
+        for step in 1.. {
+            let (sets, residual) = self.step(&course)?;
+            let last = changed;
             changed = count_changes(&self.active, &sets);
-            self.problem.tell(Stage::Contact, step, solved.residual);
-            if changed == 0 && tolerance <= LAST {
-                return Ok((step, solved.residual));
+            self.problem.tell(Stage::Contact, step, residual);
+            if changed == 0 && course.is_last() {
+                return Ok((step, residual));
             }
-            tolerance = match changed {
-                0 => LAST,
-                _ if tolerance <= LAST => LAST,
-                _ if changed > MANY => MANY_CHANGE,
-                _ => FEW_CHANGE,
-            };
-            self.take(sets, changed)?;
+            if course.is_accurate() {
+                self.note_changes(&sets);
+            }
+            course.after(step, [last, changed]);
+            if course.is_over(step) {
+                break;
+            }
+            self.take(sets, changed, course.hardness)?;
         }
         Err(Failure::NotConverged {
             solver: "active set of the contact",
             iterations: MOST_STEPS,
             residual: changed as f64,
         })
+    }
+
+    /// One linear solution with the present set; where faces have closed then, and the residual.
+    fn step(&mut self, course: &Course) -> Result<(Vec<Vec<bool>>, f64), Failure> {
+        let target = self.target();
+        let before = self.displacement.clone();
+        let effort = Effort {
+            tolerance: course.tolerance,
+            energy: (!course.is_accurate()).then_some(SOFT_MOTIONS),
+            reference: Some(self.load_length()),
+            most: MOST_ITERATIONS,
+        };
+        let solved = conjugate_gradients(
+            &self.system.operator,
+            &mut self.multigrid,
+            (&target, &mut self.displacement),
+            &effort,
+        )
+        .map_err(stalled)?;
+        self.iterations += solved.iterations;
+        self.descend(&before);
+        Ok((self.touching(), solved.residual))
+    }
+
+    /// Counts which columns change while solutions are accurate.
+    fn note_changes(&mut self, sets: &[Vec<bool>]) {
+        let old = self.active.iter().flatten();
+        let new = sets.iter().flatten();
+        let counts = self.changes.iter_mut().flatten();
+        for ((old, new), count) in old.zip(new).zip(counts) {
+            if old != new {
+                *count = count.saturating_add(1);
+            }
+        }
     }
 
     fn load_length(&self) -> f64 {
@@ -234,7 +279,10 @@ impl Search<'_> {
         let mut target = self.system.load.clone();
         for (pairing, active) in self.system.pairings.iter().zip(&self.active) {
             for (column, _) in active.iter().enumerate().filter(|(_, active)| **active) {
-                let push = pairing.stiffness * pairing.weight[column] * pairing.opening[column];
+                let push = self.hardness
+                    * pairing.stiffness
+                    * pairing.weight[column]
+                    * pairing.opening[column];
                 target[self.system.operator.place(column, pairing.plus)] -= push;
                 target[self.system.operator.place(column, pairing.minus)] += push;
             }
@@ -259,16 +307,24 @@ impl Search<'_> {
             .collect()
     }
 
-    fn take(&mut self, sets: Vec<Vec<bool>>, changed: usize) -> Result<(), Failure> {
-        if changed == 0 {
+    /// Takes a set and the hardness of the faces over into ties and levels.
+    fn take(&mut self, sets: Vec<Vec<bool>>, changed: usize, hardness: f64) -> Result<(), Failure> {
+        let other_hardness = hardness != self.hardness;
+        if changed == 0 && !other_hardness {
             return Ok(());
+        }
+        if other_hardness {
+            // Another energy from here on.
+            self.hardness = hardness;
+            self.energy = f64::INFINITY;
         }
         let size: usize = sets.iter().flatten().filter(|active| **active).count();
         self.active = sets;
-        for index in 0..self.active.len() {
-            set_ties(self.problem, &mut self.system, index, &self.active[index]);
+        for (index, active) in self.active.iter().enumerate() {
+            let state = (&active[..], &self.changes[index][..], self.hardness);
+            set_ties(self.problem, &mut self.system, index, state);
         }
-        let factor = if (changed as f64) < LAZY * size as f64 {
+        let factor = if (changed as f64) < LAZY * size as f64 && !other_hardness {
             Factor::Kept
         } else {
             Factor::Renewed
@@ -276,83 +332,6 @@ impl Search<'_> {
         self.multigrid
             .renew(&self.system.operator, factor)
             .map_err(indefinite)
-    }
-
-    /// Energy of the bodies and their loads without contact, as a quadratic along a step: value at
-    /// its start, slope there, curvature.
-    fn smooth_energy(&self, before: &[f64]) -> [f64; 3] {
-        let operator = &self.system.operator;
-        let step: Vec<f64> = self
-            .displacement
-            .iter()
-            .zip(before)
-            .map(|(new, old)| new - old)
-            .collect();
-        let (mut image, mut step_image) = (operator.zeros(), operator.zeros());
-        operator.product(before, &mut image);
-        operator.product(&step, &mut step_image);
-        let mut value =
-            0.5 * operator.dot(before, &image) - operator.dot(&self.system.load, before);
-        let mut slope = operator.dot(&step, &image) - operator.dot(&self.system.load, &step);
-        let mut curvature = operator.dot(&step, &step_image);
-        // The operator holds the ties of the touching columns; they are no part of the bodies.
-        for (pairing, active) in self.system.pairings.iter().zip(&self.active) {
-            for (column, _) in active.iter().enumerate().filter(|(_, active)| **active) {
-                let strength = pairing.stiffness * pairing.weight[column];
-                let apart =
-                    |of: &[f64]| pairing.gap(operator, of, column) - pairing.opening[column];
-                let (at, along) = (apart(before), apart(&step));
-                value -= 0.5 * strength * at * at;
-                slope -= strength * at * along;
-                curvature -= strength * along * along;
-            }
-        }
-        [value, slope, curvature]
-    }
-
-    /// Keeps a step that lowers the energy; shortens any other to where the energy is least along it.
-    fn descend(&mut self, before: &[f64]) {
-        let sticks = self.problem.interfaces.iter();
-        if sticks.clone().any(|one| one.faces == Faces::Stuck) {
-            // Ties that come and go with the contact leave no energy to compare.
-            return;
-        }
-        let smooth = self.smooth_energy(before);
-        let gaps = self.gaps(before);
-        let energy = |part: f64| {
-            smooth[0] + part * (smooth[1] + 0.5 * part * smooth[2]) + contact_energy(&gaps, part)
-        };
-        let (start, full) = (energy(0.0), energy(1.0));
-        let size = start.abs().max(full.abs());
-        let mut reached = full;
-        if full > start + LEVEL * size {
-            let part = least(|part| smooth[1] + part * smooth[2] + contact_slope(&gaps, part));
-            reached = energy(part);
-            for (new, old) in self.displacement.iter_mut().zip(before) {
-                *new = old + part * (*new - old);
-            }
-            self.shortened += 1;
-        }
-        if self.energy.is_finite() && size > 0.0 {
-            self.worst_rise = self.worst_rise.max((reached - start) / size);
-        }
-        self.energy = reached;
-    }
-
-    /// Strength, gap before and change of gap of every column of every pair.
-    fn gaps(&self, before: &[f64]) -> Vec<[f64; 3]> {
-        let operator = &self.system.operator;
-        let mut gaps = Vec::new();
-        for pairing in &self.system.pairings {
-            for (column, weight) in pairing.weight.iter().enumerate() {
-                if *weight > 0.0 {
-                    let old = pairing.gap(operator, before, column);
-                    let new = pairing.gap(operator, &self.displacement, column);
-                    gaps.push([pairing.stiffness * weight, old, new - old]);
-                }
-            }
-        }
-        gaps
     }
 
     fn field(self, mesh: Mesh, steps: usize, residual: f64) -> Result<Field, Failure> {
@@ -381,30 +360,4 @@ fn count_changes(old: &[Vec<bool>], new: &[Vec<bool>]) -> usize {
         .zip(new.iter().flatten())
         .filter(|(old, new)| old != new)
         .count()
-}
-
-fn contact_energy(gaps: &[[f64; 3]], part: f64) -> f64 {
-    gaps.iter()
-        .map(|[strength, gap, change]| 0.5 * strength * (gap + part * change).min(0.0).powi(2))
-        .sum()
-}
-
-fn contact_slope(gaps: &[[f64; 3]], part: f64) -> f64 {
-    gaps.iter()
-        .map(|[strength, gap, change]| strength * change * (gap + part * change).min(0.0))
-        .sum()
-}
-
-/// Where a rising slope passes zero between 0 and 1.
-fn least(slope: impl Fn(f64) -> f64) -> f64 {
-    let (mut low, mut high) = (0.0, 1.0);
-    for _ in 0..50 {
-        let middle = 0.5 * (low + high);
-        if slope(middle) < 0.0 {
-            low = middle;
-        } else {
-            high = middle;
-        }
-    }
-    0.5 * (low + high)
 }

@@ -246,6 +246,7 @@ impl Equations {
             };
             let effort = Effort {
                 tolerance,
+                energy: None,
                 reference: Some(unit * heat),
                 most: MOST,
             };
