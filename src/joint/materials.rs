@@ -48,8 +48,20 @@ pub(super) fn own(file: &Record, collector: &mut Collector) -> Own {
 }
 
 /// Reads the material of a plate.
+///
+/// A plate may state a conductivity in its plane and one through its thickness of its own; they
+/// stand for every temperature.
 pub(super) fn of_plate(plate: &Record, own: &Own, collector: &mut Collector) -> Option<Material> {
-    read(plate.record("material")?, own, collector)
+    let mut material = read(plate.record("material")?, own, collector)?;
+    if plate.is_faulty("conductivity") {
+        return None;
+    }
+    if let Some(stated) = plate.record("conductivity") {
+        material.conductivity = user(stated.number("in_plane")?);
+        material.conductivity_fit = None;
+        material.through = Some(user(stated.number("through")?));
+    }
+    Some(material)
 }
 
 /// Two tables with one name.
@@ -183,6 +195,7 @@ fn fresh(record: &Record, collector: &mut Collector) -> Option<Material> {
         family: String::new(),
         conductivity: spread(record.spread("conductivity")?),
         conductivity_fit: None,
+        through: None,
         youngs_modulus: user(record.number("youngs_modulus")?),
         poisson: user(POISSON),
         expansion: user(record.number("expansion")?),
@@ -217,6 +230,9 @@ fn changed(mut material: Material, record: &Record, collector: &mut Collector) -
     if let Some(value) = record.spread("conductivity") {
         material.conductivity = spread(value);
         material.conductivity_fit = None;
+    }
+    if let Some(value) = record.number("through") {
+        material.through = Some(user(value));
     }
     if let Some(value) = record.number("youngs_modulus") {
         material.youngs_modulus = user(value);
