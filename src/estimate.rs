@@ -273,14 +273,16 @@ fn planes(joint: &Joint) -> (String, String) {
 /// What the parts of a sink are called together.
 fn cooled_parts(cold: &str, parts: &[CooledPart]) -> String {
     let edge = |part: &CooledPart| matches!(part, CooledPart::Edge(_) | CooledPart::Rim);
-    let film = |part: &CooledPart| {
-        matches!(part, CooledPart::Film { .. } | CooledPart::Radiation { .. })
-    };
+    let film =
+        |part: &CooledPart| matches!(part, CooledPart::Film { .. } | CooledPart::Radiation { .. });
     if parts.iter().all(edge) {
         let count = if parts.len() == 1 { "edge" } else { "edges" };
         return format!("cooled {count} of {cold}, one temperature");
     }
-    if parts.iter().all(|part| matches!(part, CooledPart::Radiation { .. })) {
+    if parts
+        .iter()
+        .all(|part| matches!(part, CooledPart::Radiation { .. }))
+    {
         return format!("back of {cold}, mean surface");
     }
     let level = if parts.iter().all(film) {

@@ -81,10 +81,12 @@ pub(super) fn read(last: &PlateDraft, collector: &mut Collector) -> Option<Cooli
         .collect();
     Some(match parts.as_slice() {
         [CooledPart::Held(Zone::Face)] => Cooling::Whole(Sink::IsothermalBack),
-        [CooledPart::Film {
-            zone: Zone::Face,
-            coefficient,
-        }] => Cooling::Whole(Sink::Film(*coefficient)),
+        [
+            CooledPart::Film {
+                zone: Zone::Face,
+                coefficient,
+            },
+        ] => Cooling::Whole(Sink::Film(*coefficient)),
         [CooledPart::Rim] => Cooling::Whole(Sink::Rim),
         _ => {
             radiates_among(&parts, records, collector);
@@ -125,13 +127,11 @@ fn radiates_among(parts: &[CooledPart], records: &[Record], collector: &mut Coll
 }
 
 /// The parts that one table states.
-fn parts(
-    record: &Record,
-    last: &PlateDraft,
-    collector: &mut Collector,
-) -> Option<Vec<CooledPart>> {
+fn parts(record: &Record, last: &PlateDraft, collector: &mut Collector) -> Option<Vec<CooledPart>> {
     let stated: Vec<&str> = WAYS.into_iter().filter(|key| record.has(key)).collect();
-    let whole = ["edge", "radiation"].into_iter().find(|key| record.has(key));
+    let whole = ["edge", "radiation"]
+        .into_iter()
+        .find(|key| record.has(key));
     let zone = ["size", "diameter", "centre"]
         .into_iter()
         .find(|key| record.has(key));
@@ -173,11 +173,7 @@ fn parts(
     }
 }
 
-fn edges(
-    record: &Record,
-    last: &PlateDraft,
-    collector: &mut Collector,
-) -> Option<Vec<CooledPart>> {
+fn edges(record: &Record, last: &PlateDraft, collector: &mut Collector) -> Option<Vec<CooledPart>> {
     let words = record.words("edge")?;
     let outline = last.outline.as_ref()?;
     let round = matches!(outline, Outline::Disc { .. });

@@ -102,7 +102,10 @@ impl Written<'_> {
         match DeValue::parse(self.text) {
             Ok(value) => {
                 let node = Node::value(&value, self.start);
-                let wants_text = matches!(kind, Kind::Text | Kind::Name(_) | Kind::Choice(_) | Kind::Choices(_));
+                let wants_text = matches!(
+                    kind,
+                    Kind::Text | Kind::Name(_) | Kind::Choice(_) | Kind::Choices(_)
+                );
                 if wants_text && matches!(node.form, Form::Number(..) | Form::Flag(_)) {
                     as_text()
                 } else {

@@ -314,6 +314,7 @@ mod tests {
         let equal = Strains {
             plates: &[1e-3, 1e-3],
             washers: 1e-3,
+            isolating: 1e-3,
             bolt: 1e-3,
         };
         assert!(found.temperature_gain(&equal).abs() < 1e-6);

@@ -61,7 +61,10 @@ pub(super) fn read(last: &PlateDraft, collector: &mut Collector) -> Option<Radia
 impl Radiating {
     /// The case whose sink surface follows from surroundings and heat; the outer option is none
     /// when nothing follows, the inner one when it should but cannot.
-    #[expect(clippy::option_option, reason = "not asked for and faulty are two things")]
+    #[expect(
+        clippy::option_option,
+        reason = "not asked for and faulty are two things"
+    )]
     pub(in crate::joint) fn surface(
         &self,
         (service, temperatures): (&Record, &Record),
@@ -103,7 +106,11 @@ impl Radiating {
             format!(
                 "from the balance: {} leave by radiation{} to {}",
                 units::show(heat, Quantity::Power),
-                if self.back.film > 0.0 { " and film" } else { "" },
+                if self.back.film > 0.0 {
+                    " and film"
+                } else {
+                    ""
+                },
                 units::show(surroundings, Quantity::Temperature)
             ),
         );
@@ -128,7 +135,11 @@ impl Radiating {
             let shown = units::show(case.temperature, Quantity::Temperature);
             match self.back.surroundings(case.temperature, heat) {
                 Some(found) => told.push(if cases.len() > 1 {
-                    format!("{}: {}", case.name, units::show(found, Quantity::Temperature))
+                    format!(
+                        "{}: {}",
+                        case.name,
+                        units::show(found, Quantity::Temperature)
+                    )
                 } else {
                     units::show(found, Quantity::Temperature)
                 }),

@@ -14,9 +14,7 @@ use crate::{
     pressure::elastic::{Field, Mesh},
     resistance::{
         self, Path,
-        columns::{
-            Body, Conduction, Conductivity, Heat, Meeting, Perfect, Slab, Stack, Terminals,
-        },
+        columns::{Body, Conduction, Conductivity, Heat, Meeting, Perfect, Slab, Stack, Terminals},
     },
 };
 

@@ -67,7 +67,12 @@ impl Ends {
 
 /// Every heated and cooled zone, in joint coordinates.
 pub(super) fn heat_zones(joint: &Joint) -> Vec<joint::Zone> {
-    let mut found: Vec<joint::Zone> = joint.source.zones().into_iter().map(|each| each.0).collect();
+    let mut found: Vec<joint::Zone> = joint
+        .source
+        .zones()
+        .into_iter()
+        .map(|each| each.0)
+        .collect();
     if let Cooling::Parts(parts) = &joint.sink {
         let origin = joint.cold().origin;
         for part in parts {
