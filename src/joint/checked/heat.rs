@@ -157,6 +157,7 @@ impl From<Sink> for Cooling {
 
 impl Zone {
     /// The same zone of a plate whose origin lies there, in joint coordinates.
+    #[must_use]
     pub fn moved(self, [x, y]: [f64; 2]) -> Self {
         let shifted = |[a, b]: [f64; 2]| [a + x, b + y];
         match self {

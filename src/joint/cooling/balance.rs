@@ -132,22 +132,17 @@ impl Radiating {
         };
         let mut told = Vec::new();
         for case in cases {
-            let shown = units::show(case.temperature, Quantity::Temperature);
-            match self.back.surroundings(case.temperature, heat) {
-                Some(found) => told.push(if cases.len() > 1 {
-                    format!(
-                        "{}: {}",
-                        case.name,
-                        units::show(found, Quantity::Temperature)
-                    )
-                } else {
-                    units::show(found, Quantity::Temperature)
-                }),
-                None => {
-                    collector.report(self.too_much(heat, &shown));
-                    return;
-                }
-            }
+            let Some(found) = self.back.surroundings(case.temperature, heat) else {
+                let shown = units::show(case.temperature, Quantity::Temperature);
+                collector.report(self.too_much(heat, &shown));
+                return;
+            };
+            let shown = units::show(found, Quantity::Temperature);
+            told.push(if cases.len() > 1 {
+                format!("{}: {shown}", case.name)
+            } else {
+                shown
+            });
         }
         let film = radiative_film(self.back.emissivity, cases[0].temperature);
         collector.assume(
