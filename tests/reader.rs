@@ -4,6 +4,8 @@
 mod advice;
 #[path = "reader/fillers.rs"]
 mod fillers;
+#[path = "reader/heat.rs"]
+mod heat;
 #[path = "reader/plates.rs"]
 mod plates;
 
