@@ -4,12 +4,19 @@
 //! Each check stands beside a solution of its own: closed forms of one dimension, the series of
 //! Saint-Venant, a fin that radiates by the fourth power solved here, symmetry and superposition.
 
-use std::f64::consts::PI;
+use std::{f64::consts::PI, sync::Arc};
 
 use ringsum::{
     estimate::{Chain, Choice, Fineness, Options, Realisation, State, Watch},
     joint::{self, Joint, STEFAN_BOLTZMANN},
-    resistance::Path,
+    numerics::columns::Plan,
+    resistance::{
+        Path,
+        columns::{
+            Body, Bolt, Conductivity, Edge, Rim, Seat, Sink, Slab, Source, Stack, Terminals, Zone,
+            solve_both,
+        },
+    },
     uncertainty,
 };
 
@@ -207,6 +214,8 @@ fn two_strips_of_a_film_are_one_twice_as_wide() {
     near(two, one, 1e-3, "two strips");
 }
 
+type Reading = fn(&Path) -> f64;
+
 #[test]
 fn two_zones_superpose() {
     let heated = |first: f64, second: f64| {
@@ -226,7 +235,6 @@ fn two_zones_superpose() {
     // Mean by heat over the heat: R(q₁, q₂) = (q₁² R₁₁ + 2 q₁ q₂ R₁₂ + q₂² R₂₂)/(q₁ + q₂)².
     let [first, second, even, uneven] = [[1.0, 1e-9], [1e-9, 1.0], [1.0, 1.0], [3.0, 1.0]]
         .map(|[first, second]| heated(first, second));
-    type Reading = fn(&Path) -> f64;
     let readings: [Reading; 2] = [|path| path.source_to_sink, |path| path.perfect_contact];
     for reading in readings {
         let [r11, r22] = [&first, &second].map(reading);
@@ -318,9 +326,9 @@ fn radiating_fin(emissivity: f64, heat: f64, (surroundings, share): (f64, f64)) 
 fn the_slope_meets_a_fin_that_radiates_by_the_fourth_power() {
     let heated = "heated = { centre = [\"10 mm\", \"20 mm\"], size = [\"20 mm\", \"40 mm\"] }";
     let (emissivity, heat) = (0.85, 0.6);
-    // Strong radiation to space, weak difference to warm surroundings: the slope serves both.
+    // Towards the cold the chord is a third of the slope, towards warmer surroundings two thirds.
     for surroundings in [100.0, 220.0] {
-        // A hotter sheet radiates more: in sheets this thin the film is felt.
+        // Sheets that conduct little feel how the flux grows where they are warm.
         let thin = |keys: &str| {
             format!(
                 "conductivity = {{ in_plane = \"5 W/(m·K)\", through = \"1e5 W/(m·K)\" }}\n{keys}"
@@ -368,9 +376,9 @@ fn a_radiating_back_has_no_coolant() {
     assert_eq!(path(&joint, Fineness::Fast).coolant_drop, None);
 }
 
-/// z' = z √(k_r/k_z), k' = √(k_r k_z): the equations of an isotropic plate, face fluxes unchanged.
 #[test]
 fn a_layered_plate_is_an_isotropic_one_stretched() {
+    // z' = z √(k_r/k_z), k' = √(k_r k_z): the equations of an isotropic plate, face fluxes unchanged.
     let (in_plane, through) = (200.0, 12.5);
     let heated = "heated = { centre = [\"40 mm\", \"18 mm\"], diameter = \"14 mm\" }";
     let cooled = "cooled = { film = \"4000 W/(m²·K)\" }";
@@ -478,4 +486,66 @@ fn isolating_washers_stand_in_series_with_the_shank() {
         codes.any(|code| code == "preload/isolating-creep")
     };
     assert!(told(&washed.1) && !told(&bare.1));
+}
+
+#[test]
+fn every_way_of_heat_at_once_keeps_its_balance() {
+    let lines = |count: usize, length: f64| -> Vec<f64> {
+        let step = |k: usize| length * k as f64 / count as f64;
+        (0..=count).map(step).collect()
+    };
+    let plan = Plan::new(lines(40, LENGTH), lines(16, WIDTH));
+    let plate = |thickness: f64| Body {
+        layers: vec![Slab {
+            shares: vec![1.0; 40 * 16],
+            heights: vec![thickness],
+            degree: 2,
+        }],
+    };
+    let stack = Stack::new(plan, vec![plate(2e-3), plate(3e-3)]).expect("it fits");
+    let stack = Arc::new(stack);
+    let disc = |x: f64, radius: f64| Zone::Disc {
+        centre: [x, 0.018],
+        radius,
+    };
+    let terminals = Terminals {
+        source: Source::Flux(vec![(disc(0.02, 0.008), 12.0), (disc(0.07, 0.012), 30.0)]),
+        sinks: vec![
+            Sink::Film {
+                zone: Zone::Rectangle {
+                    low: [0.03, 0.0],
+                    high: [0.043, WIDTH],
+                },
+                coefficient: 5000.0,
+            },
+            Sink::Film {
+                zone: Zone::Face,
+                coefficient: 12.0,
+            },
+            Sink::Rim(Rim::Straight(Edge::East)),
+            Sink::Held(disc(0.08, 0.006)),
+        ],
+        bolts: vec![Bolt {
+            at: [0.05, 0.02],
+            head: [0.003, 0.005],
+            seat: Seat::Nut {
+                annulus: [0.003, 0.005],
+            },
+            strength: 0.05,
+        }],
+    };
+    let conductivity = [
+        Conductivity::layered(500.0, 6.0),
+        Conductivity::layered(20.0, 80.0),
+    ];
+    let (_, heat, perfect) =
+        solve_both(&stack, (&terminals, &conductivity), &stack.uniform(3000.0))
+            .expect("it is solved");
+    assert!(heat.health.balance < 1e-8, "{:?}", heat.health);
+    assert!(perfect.health.balance < 1e-8, "{:?}", perfect.health);
+    let path = heat.path(&perfect);
+    assert!(path.source_to_sink >= path.resistance_lower);
+    // Means of the zones by their heat are the mean of the source.
+    let mean = (12.0 * heat.zones[0] + 30.0 * heat.zones[1]) / 42.0;
+    near(heat.source_to_sink, mean, 1e-12, "mean by heat");
 }
