@@ -388,19 +388,19 @@ fn a_layered_plate_is_an_isotropic_one_stretched() {
     };
     let layered =
         format!("{{ in_plane = \"{in_plane} W/(m·K)\", through = \"{through} W/(m·K)\" }}");
-    let found = path(&read(&file(&layered), &[]), Fineness::Normal);
+    let found = path(&read(&file(&layered), &[]), Fineness::Fast);
     let stretch = f64::sqrt(in_plane / through);
     let mean = f64::sqrt(in_plane * through);
     let even = format!("{{ in_plane = \"{mean} W/(m·K)\", through = \"{mean} W/(m·K)\" }}");
     let thickness = format!("{} mm", 2.0 * stretch);
     let sets = ["upper", "lower"].map(|plate| format!("plate.{plate}.thickness=\"{thickness}\""));
     let other = read(&file(&even), &sets.each_ref().map(String::as_str));
-    let expected = path(&other, Fineness::Normal);
-    // Two grids of one problem: 1 % apart at fast, 0.2 % at normal.
+    let expected = path(&other, Fineness::Fast);
+    // Two grids of one problem: 0.96 % apart here at fast, 0.2 % at normal.
     near(
         found.perfect_contact,
         expected.perfect_contact,
-        5e-3,
+        0.012,
         "stretched",
     );
     // Neither of the two conductivities alone comes near.

@@ -21,6 +21,9 @@ const POISSON: f64 = 0.33;
 /// The temperature at which the catalogue starts to count contraction, K.
 const REFERENCE_TEMPERATURE: f64 = 293.0;
 
+/// The lowest temperature that a file may state, K.
+const LOWEST: f64 = 0.01;
+
 /// Most materials that one fault suggests.
 const MOST_SUGGESTED: usize = 5;
 
@@ -57,8 +60,9 @@ pub(super) fn of_plate(plate: &Record, own: &Own, collector: &mut Collector) -> 
         return None;
     }
     if let Some(stated) = plate.record("conductivity") {
-        material.conductivity = user(stated.number("in_plane")?);
-        material.conductivity_fit = None;
+        let in_plane = stated.number("in_plane")?;
+        material.conductivity = user(in_plane);
+        material.conductivity_fit = Some(constant(in_plane, LOWEST));
         material.through = Some(user(stated.number("through")?));
     }
     Some(material)
@@ -287,16 +291,21 @@ fn hold_from(material: &mut Material, lowest: f64, record: &Record, collector: &
     }
     let conductivity = material.conductivity.value;
     let expansion = material.expansion.value;
-    material.conductivity_fit = Some(ConductivityFit {
-        form: FitForm::LogPolynomial,
-        coefficients: vec![conductivity.log10()],
-        valid: [lowest, REFERENCE_TEMPERATURE],
-        source: "stated in the joint file".into(),
-    });
+    material.conductivity_fit = Some(constant(conductivity, lowest));
     material.contraction = Some(vec![
         (lowest, expansion * (REFERENCE_TEMPERATURE - lowest)),
         (REFERENCE_TEMPERATURE, 0.0),
     ]);
+}
+
+/// A conductivity that holds down to a temperature.
+fn constant(conductivity: f64, lowest: f64) -> ConductivityFit {
+    ConductivityFit {
+        form: FitForm::LogPolynomial,
+        coefficients: vec![conductivity.log10()],
+        valid: [lowest, REFERENCE_TEMPERATURE],
+        source: "stated in the joint file".into(),
+    }
 }
 
 fn user(value: f64) -> Datum {

@@ -160,6 +160,11 @@ fn a_plate_conducts_otherwise_along_than_through() {
         .map(|each| each.0)
         .collect();
     assert_eq!(fields, ["plate.box.conductivity"]);
+    // What the plate states is its own at any temperature.
+    for temperature in [77.0, 293.0] {
+        let found = material.conductivity_at(temperature).expect("stated");
+        assert!((found - 400.0).abs() < 1e-9, "{found}");
+    }
     // The same by the material.
     let own = read_with(
         &plain(),
