@@ -73,8 +73,8 @@ pub(super) const ENTRIES: &[Entry] = &[
         "zone/outside",
         "A heated or cooled zone off its plate",
         "The zone reaches beyond the face it stands on, so part of its heat would enter nowhere.",
-        "Check its centre and size; both are in the coordinates of the joint, from the lower left \
-         corner of the first plate.",
+        "Check its centre and size; both are in the coordinates of its own plate, from the lower left \
+         corner (round plate: its centre; outline: as its points).",
     ),
     fault(
         "service/cold-contact",
