@@ -18,7 +18,7 @@ pub use crate::resistance::RingRow;
 
 use crate::{
     diagnostic::Assumption,
-    joint::{Fastener, Joint, Sink, Zone},
+    joint::{CooledPart, Cooling, Fastener, Joint, Sink, Zone},
     pressure,
     resistance::{self, Path},
 };
@@ -256,16 +256,41 @@ fn results(path: &Path) -> Results {
 fn planes(joint: &Joint) -> (String, String) {
     let warm = &joint.warm().name;
     let cold = &joint.cold().name;
-    let source = match joint.source.zone {
-        Zone::Face => format!("outer face of {warm}, mean"),
-        Zone::Rectangle { .. } | Zone::Disc { .. } => format!("heated zone on {warm}, mean"),
+    let source = match joint.source.alone().map(|source| source.zone) {
+        None => format!("heated zones on {warm}, mean by heat"),
+        Some(Zone::Face) => format!("outer face of {warm}, mean"),
+        Some(Zone::Rectangle { .. } | Zone::Disc { .. }) => format!("heated zone on {warm}, mean"),
     };
-    let sink = match joint.sink {
-        Sink::IsothermalBack => format!("back of {cold}, one temperature"),
-        Sink::Film(_) => format!("back of {cold}, mean surface"),
-        Sink::Rim => format!("rim of {cold}, one temperature"),
+    let sink = match &joint.sink {
+        Cooling::Whole(Sink::IsothermalBack) => format!("back of {cold}, one temperature"),
+        Cooling::Whole(Sink::Film(_)) => format!("back of {cold}, mean surface"),
+        Cooling::Whole(Sink::Rim) => format!("rim of {cold}, one temperature"),
+        Cooling::Parts(parts) => cooled_parts(cold, parts),
     };
     (source, sink)
+}
+
+/// What the parts of a sink are called together.
+fn cooled_parts(cold: &str, parts: &[CooledPart]) -> String {
+    let edge = |part: &CooledPart| matches!(part, CooledPart::Edge(_) | CooledPart::Rim);
+    let film =
+        |part: &CooledPart| matches!(part, CooledPart::Film { .. } | CooledPart::Radiation { .. });
+    if parts.iter().all(edge) {
+        let count = if parts.len() == 1 { "edge" } else { "edges" };
+        return format!("cooled {count} of {cold}, one temperature");
+    }
+    if parts
+        .iter()
+        .all(|part| matches!(part, CooledPart::Radiation { .. }))
+    {
+        return format!("back of {cold}, mean surface");
+    }
+    let level = if parts.iter().all(film) {
+        "mean surface"
+    } else {
+        "temperature of what is held"
+    };
+    format!("cooled parts of {cold}, {level}")
 }
 
 /// A fastener group for people: `M5 A2-70, 6 places`.

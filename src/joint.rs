@@ -12,11 +12,14 @@ mod beyond_cone;
 mod cold;
 mod collector;
 mod contact;
+mod cooling;
 mod fasteners;
 mod filler;
 mod finishes;
 mod gaps;
 mod geometry;
+mod heating;
+mod isolating;
 mod lands;
 mod maps;
 mod materials;
@@ -24,6 +27,7 @@ mod overrides;
 mod patches;
 mod patterns;
 mod plates;
+mod radiation;
 mod record;
 mod sag;
 mod schema;
@@ -50,6 +54,7 @@ use crate::{
 pub use checked::*;
 pub use finishes::slope_from_roughness;
 pub use maps::{Files, LONGEST_TABLE};
+pub use radiation::{RadiatingBack, STEFAN_BOLTZMANN, radiative_film};
 pub use schema::schema;
 
 /// Longest joint file, bytes.
@@ -209,10 +214,11 @@ fn newer_format(file: &Record) -> Option<Fault> {
 fn assembled(file: &Record, tables: &mut Tables<'_>, collector: &mut Collector) -> Option<Joint> {
     let own = materials::own(file, collector);
     let plates = plates::read(file, &own, tables, collector);
-    let cooled = plates
+    let heat = heating::heat(file, collector);
+    let back = plates
         .as_ref()
-        .and_then(|[_, lower]| lower.record.record("cooled"));
-    let service = service::read(file, cooled, collector);
+        .and_then(|plates| cooling::back(plates.last()?, collector));
+    let service = service::read(file, (heat, back.as_ref()), collector);
     let temperature = service
         .as_ref()
         .and_then(|service| service.cases.first())
@@ -223,10 +229,10 @@ fn assembled(file: &Record, tables: &mut Tables<'_>, collector: &mut Collector) 
         fasteners::read_alone(file, collector);
         return None;
     };
-    let source = plates::source(&plates[0], collector);
-    let sink = plates::sink(&plates[1], collector);
+    let source = heating::read(&plates[0], collector);
+    let sink = cooling::read(&plates[plates.len() - 1], collector);
     let contact = contact::read(file, &plates, collector);
-    let fasteners = fasteners::read(file, &plates, collector);
+    let fasteners = fasteners::read(file, (&plates, &own), collector);
     let losses = contact::losses(file, collector);
     let plates: Option<Vec<Plate>> = plates
         .into_iter()

@@ -4,6 +4,8 @@
 mod advice;
 #[path = "reader/fillers.rs"]
 mod fillers;
+#[path = "reader/heat.rs"]
+mod heat;
 #[path = "reader/plates.rs"]
 mod plates;
 
@@ -14,7 +16,7 @@ use ringsum::{
     diagnostic::Colour,
     joint::{
         self, Bounds, ConeRule, ConeShape, Engagement, FillerKind, Friction, Joint, Law, Medium,
-        Outline, Plane, RequirementKind, Sink, Tightening, Zone,
+        Outline, Plane, RequirementKind, Sink, Source, Tightening, Zone,
     },
 };
 
@@ -103,15 +105,13 @@ fn the_first_reference_joint_becomes_what_it_says() {
     assert!(near(upper.material.conductivity.value, 167.0));
     assert!(near(upper.material.expansion.value, 23.6e-6));
     assert!(at(joint.cold().origin, [0.0, 0.0]));
-    assert_eq!(joint.sink, Sink::Film(2000.0));
-    assert!(!joint.source.isothermal);
-    assert_eq!(
-        joint.source.zone,
-        Zone::Rectangle {
-            centre: [0.04, 0.04],
-            size: [0.04, 0.04]
-        }
-    );
+    assert_eq!(joint.sink, Sink::Film(2000.0).into());
+    let zone = Zone::Rectangle {
+        centre: [0.04, 0.04],
+        size: [0.04, 0.04],
+    };
+    let isothermal = false;
+    assert_eq!(joint.source, Source { zone, isothermal }.into());
     assert_eq!(joint.contact.law, Law::PlasticPower);
     assert_eq!(joint.contact.cone, ConeRule::Fitted);
     assert_eq!(joint.contact.shape, ConeShape::Fitted);
@@ -138,8 +138,11 @@ fn a_round_plate_counts_from_its_centre() {
     let joint = read(&reference("round_single.toml"));
     assert_eq!(joint.warm().outline, Outline::Disc { radius: 0.03 });
     assert!(at(joint.cold().origin, [0.0, 0.0]));
-    assert_eq!(joint.sink, Sink::IsothermalBack);
-    assert_eq!(joint.source.zone, Zone::Face);
+    assert_eq!(joint.sink, Sink::IsothermalBack.into());
+    assert_eq!(
+        joint.source.alone().map(|source| source.zone),
+        Some(Zone::Face)
+    );
 }
 
 /// The sketch of a converter box on a panel, with nearly every key.

@@ -189,6 +189,7 @@ fn checked(
         conductivity_fit: named(raw.conductivity_fit.as_deref(), &raw.name, |key| {
             fits.get(&plain(key)).map(|(_, fit)| fit.clone())
         })?,
+        through: None,
         youngs_modulus: values.datum(&raw.youngs_modulus, 1e9)?,
         poisson,
         expansion: values.datum(&raw.expansion, 1e-6)?,

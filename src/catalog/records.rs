@@ -52,10 +52,12 @@ pub struct Material {
     pub kind: MaterialKind,
     /// Family for galvanic pairing: `aluminium`, `copper`, `steel`, `stainless`, `silver`, `graphite`, ….
     pub family: String,
-    /// Conductivity near 300 K, W/(m K).
+    /// Conductivity near 300 K, W/(m K); in the plane of a plate where `through` differs.
     pub conductivity: Datum,
     /// Conductivity against temperature, for the cold.
     pub conductivity_fit: Option<ConductivityFit>,
+    /// Conductivity through the thickness of a plate near 300 K, W/(m K), where it differs.
+    pub through: Option<Datum>,
     /// Young's modulus, Pa.
     pub youngs_modulus: Datum,
     /// Poisson's ratio, 1.
@@ -76,6 +78,15 @@ pub struct Material {
     pub bearing_limit: Option<Datum>,
     /// Remark.
     pub note: Option<String>,
+}
+
+impl Material {
+    /// Conductivity through the thickness of a plate over that in its plane, 1; the same at every
+    /// temperature.
+    pub fn through_ratio(&self) -> f64 {
+        let through = self.through.as_ref();
+        through.map_or(1.0, |through| through.value / self.conductivity.value)
+    }
 }
 
 /// A published fit of conductivity against temperature.

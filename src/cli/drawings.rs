@@ -27,7 +27,7 @@ pub fn of_joint(
     let furnish = |map: PlanMap| PlanMap {
         outlines: joint.plates.iter().map(outline).collect(),
         bolts: bolts(joint, nominal, field),
-        heated: heated(joint.source.zone),
+        heated: joint.source.alone().and_then(|source| heated(source.zone)),
         details: joint.plates.iter().flat_map(details).collect(),
         ..map
     };

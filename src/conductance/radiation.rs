@@ -1,7 +1,6 @@
 //! Radiation across the gap.
 
-/// Stefan–Boltzmann constant, W/(m² K⁴). CODATA 2018, exact in the SI of 2019.
-const STEFAN_BOLTZMANN: f64 = 5.670374419e-8;
+use crate::joint::STEFAN_BOLTZMANN;
 
 /// Conductance by radiation between two parallel faces, W/(m² K).
 ///

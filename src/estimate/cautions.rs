@@ -128,7 +128,7 @@ fn plan_grid_cautions(joint: &Joint, cases: &[CaseResult]) -> Vec<Caution> {
              solved in full this read 6 and 10 % high in vacuum; no upper bound is proved",
         ));
     }
-    if joint.sink == Sink::Rim && joint.bolts().count() > 1 {
+    if joint.sink.alone() == Some(Sink::Rim) && joint.bolts().count() > 1 {
         found.push(caution(
             "resistance/edge-sink",
             format!(

@@ -155,6 +155,15 @@ fn temperature_gain(
         length: stack.washers,
         strain: bolt,
     });
+    if let Some(washers) = &fastener.isolating {
+        parts.push(Part {
+            length: stack.isolating,
+            strain: washers
+                .material
+                .contraction_between(assembly, temperature)
+                .map_err(cold)?,
+        });
+    }
     let bolt = Part {
         length: stack.grip,
         strain: bolt,

@@ -24,7 +24,8 @@ const LAW_FACTOR: f64 = 1.15;
 /// Scatter of the gas parameter through the accommodation, one standard deviation (judgement).
 const GAS_FACTOR: f64 = 1.2;
 
-/// Conductivity of a plate at a temperature and a realisation, W/(m K).
+/// Conductivity of a plate at a temperature and a realisation, W/(m K); in its plane where that
+/// through it differs.
 pub fn conductivity(plate: &Plate, temperature: f64, place: f64) -> Result<f64, Failure> {
     let datum = &plate.material.conductivity;
     let value = plate
@@ -73,7 +74,9 @@ fn face(
     let side = index.min(1);
     let finish = &plate.finish;
     Ok(Face {
-        conductivity: conductivity(plate, temperature, at.conductivity[side])?,
+        // Below a spot a solid of two conductivities spreads heat as one of √(k_in k_through) does.
+        conductivity: conductivity(plate, temperature, at.conductivity[side])?
+            * plate.material.through_ratio().sqrt(),
         roughness: finish.roughness.at(at.roughness[side]),
         slope: finish.slope * finish.slope_factor.powf(at.slope[side]),
         youngs_modulus: plate.material.youngs_modulus.value,

@@ -1,6 +1,6 @@
 //! What a joint states that the closed-form pressure cone cannot carry.
 
-use crate::joint::{Compliance, FaceFriction, HeadModel, Joint, Outline, Sag};
+use crate::joint::{Compliance, FaceFriction, HeadModel, Joint, Outline, Plate, Sag};
 
 impl Joint {
     /// Fields of the file that need the elastic solution of the whole joint, each with the reason.
@@ -46,10 +46,28 @@ impl Joint {
                     "sag",
                     "the cone takes faces as flat",
                 ),
+                (
+                    plate.material.through.is_some(),
+                    "conductivity",
+                    "closed forms know one conductivity per plate",
+                ),
             ];
             for (_, key, why) in stated.into_iter().filter(|(is_stated, ..)| *is_stated) {
                 needs.push((field(key), why));
             }
+        }
+        let field = |plate: &Plate, key: &str| format!("plate.{}.{key}", plate.name);
+        if self.source.alone().is_none() {
+            needs.push((
+                field(self.warm(), "heated"),
+                "closed forms know one heated zone",
+            ));
+        }
+        if self.sink.alone().is_none() {
+            needs.push((
+                field(self.cold(), "cooled"),
+                "closed forms know one film or temperature on the whole back, or a round rim",
+            ));
         }
         if self.contact.head_model == HeadModel::Rigid {
             needs.push(("contact.head_model".into(), "the cone has uniform heads"));
@@ -69,7 +87,9 @@ mod tests {
     use std::sync::Arc;
 
     use super::*;
-    use crate::joint::{Feet, FlatnessMap, Patch, Rib, fixture};
+    use crate::joint::{
+        CooledPart, Cooling, Edge, Feet, FlatnessMap, Heating, Patch, Rib, fixture,
+    };
 
     #[test]
     fn a_plain_joint_needs_no_elastic_field() {
@@ -103,6 +123,9 @@ mod tests {
             height: 1e-3,
         }];
         lower.sag = Some(Sag::Flux(1e3));
+        lower.material.through = Some(lower.material.conductivity.clone());
+        joint.source = Heating::Several(Vec::new());
+        joint.sink = Cooling::Parts(vec![CooledPart::Edge(Edge::Left)]);
         joint.contact.head_model = HeadModel::Rigid;
         joint.contact.faces = FaceFriction::Stuck;
         joint.contact.compliance = Compliance::Asperities;
@@ -120,6 +143,9 @@ mod tests {
                 "plate.box.flatness_map",
                 "plate.panel.ribs",
                 "plate.panel.sag",
+                "plate.panel.conductivity",
+                "plate.box.heated",
+                "plate.panel.cooled",
                 "contact.head_model",
                 "contact.faces",
                 "contact.compliance",

@@ -1,11 +1,13 @@
 //! The checked joint: SI, nothing missing, every default already recorded as an assumption.
 
 mod flatness_map;
+mod heat;
 mod plates;
 
 use crate::{catalog, diagnostic::Assumption};
 
 pub use flatness_map::FlatnessMap;
+pub use heat::{CooledPart, Cooling, Edge, HeatedZone, Heating, Sink, Source, Zone};
 pub use plates::{Bimetal, Coating, Feet, Finish, Outline, Patch, Plate, Rib, Sag};
 
 /// Everything the chain needs to know of one joint. Lengths in m, every other value in SI.
@@ -21,9 +23,9 @@ pub struct Joint {
     /// Plates from warm to cold; two.
     pub plates: Vec<Plate>,
     /// Where heat enters the first plate.
-    pub source: Source,
+    pub source: Heating,
     /// Where heat leaves the last plate.
-    pub sink: Sink,
+    pub sink: Cooling,
     /// Groups of like fasteners; at least one, each with at least one place.
     pub fasteners: Vec<Fastener>,
     /// How the faces touch.
@@ -159,47 +161,6 @@ pub enum Limit {
     Least,
 }
 
-/// Where heat enters the outer face of the first plate.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Source {
-    /// The heated zone.
-    pub zone: Zone,
-    /// One temperature over the zone instead of uniform flux.
-    pub isothermal: bool,
-}
-
-/// A part of an outer face, in joint coordinates.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub enum Zone {
-    /// The whole outer face.
-    Face,
-    /// A rectangle parallel to the axes.
-    Rectangle {
-        /// Centre, m.
-        centre: [f64; 2],
-        /// Width and height, m.
-        size: [f64; 2],
-    },
-    /// A disc.
-    Disc {
-        /// Centre, m.
-        centre: [f64; 2],
-        /// Radius, m.
-        radius: f64,
-    },
-}
-
-/// Where heat leaves the last plate.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub enum Sink {
-    /// The whole back face at one temperature.
-    IsothermalBack,
-    /// A film on the whole back face, W/(m² K).
-    Film(f64),
-    /// The rim of a round plate at one temperature, back insulated.
-    Rim,
-}
-
 /// A group of like fasteners.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Fastener {
@@ -231,8 +192,28 @@ pub struct Fastener {
     pub head_plate: usize,
     /// Whether the shank conducts heat.
     pub shank_path: bool,
+    /// Washers that keep the heat of the plates from head and nut.
+    pub isolating: Option<Isolating>,
     /// Places in joint coordinates, m.
     pub places: Vec<[f64; 2]>,
+}
+
+/// Isolating washers of a bolt, all alike.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Isolating {
+    /// Their material.
+    pub material: catalog::Material,
+    /// Thickness of each, m.
+    pub thickness: f64,
+    /// How many: under the head, under the nut, or both.
+    pub count: u32,
+}
+
+impl Isolating {
+    /// Thickness of all together, m.
+    pub fn height(&self) -> f64 {
+        f64::from(self.count) * self.thickness
+    }
 }
 
 /// A flat annulus that carries the clamp force.
@@ -242,6 +223,13 @@ pub struct Seat {
     pub inner_radius: f64,
     /// Outer radius, m.
     pub outer_radius: f64,
+}
+
+impl Seat {
+    /// Area of the annulus, m².
+    pub fn area(&self) -> f64 {
+        std::f64::consts::PI * (self.outer_radius.powi(2) - self.inner_radius.powi(2))
+    }
 }
 
 /// How the far end of a bolt holds.

@@ -29,6 +29,10 @@ pub(super) fn check(joint: &Joint, file: &Record, collector: &mut Collector) {
             .cases
             .iter()
             .find_map(|case| bolt(fastener, joint, case).err());
+        if let Some(washers) = &fastener.isolating {
+            let span = record.span("isolating");
+            cold_data(&washers.material, joint, &span, collector);
+        }
         if let Some(cold) = cold {
             let advice = "choose a grade whose metal is known in the cold, such as `A2-70`";
             collector.report(data_fault(&cold, &record.span("grade"), advice));

@@ -6,7 +6,9 @@ use crate::{
     joint::{
         Engagement, Fastener, MOST_PLACES,
         collector::{Collector, Wording, fault},
+        isolating,
         lands::{self, Land, Site},
+        materials::Own,
         patterns,
         plates::PlateDraft,
         record::Record,
@@ -21,14 +23,14 @@ use crate::{
 /// Reads all fastener groups; none when one of them is faulty.
 pub(super) fn read(
     file: &Record,
-    plates: &[PlateDraft; 2],
+    (plates, own): (&[PlateDraft; 2], &Own),
     collector: &mut Collector,
 ) -> Option<Vec<Fastener>> {
     let records = file.records("fastener");
     let mut fasteners = Vec::with_capacity(records.len());
     let mut sites = Vec::with_capacity(records.len());
     for record in records {
-        let (fastener, site) = group(record, plates, collector);
+        let (fastener, site) = group(record, (plates, own), collector);
         fasteners.extend(fastener);
         sites.extend(site);
     }
@@ -67,7 +69,7 @@ pub(super) fn read_alone(file: &Record, collector: &mut Collector) {
 /// A group, and its site even when other parts of the group are faulty.
 fn group(
     record: &Record,
-    plates: &[PlateDraft; 2],
+    (plates, own): (&[PlateDraft; 2], &Own),
     collector: &mut Collector,
 ) -> (Option<Fastener>, Option<Site>) {
     let thread = thread(record, collector);
@@ -93,6 +95,8 @@ fn group(
             seats: seats::read(bolt, holes, collector)?,
         })
     });
+    let engagement = seated.map(|seated| seated.engagement);
+    let isolating = isolating::read(record, (engagement, own), collector);
     let land = seated.map_or_else(Land::default, Seated::land);
     let site = places.map(|places| Site { land, places });
     let shank_path = record
@@ -115,6 +119,7 @@ fn group(
             tightening: tightening?,
             head_plate: seated.head_plate,
             shank_path: shank_path?,
+            isolating: isolating?,
             places: site
                 .as_ref()?
                 .places

@@ -57,6 +57,8 @@ pub enum Kind {
     Number,
     /// One of a few words.
     Choice(&'static [&'static str]),
+    /// One of a few words, or a list of them.
+    Choices(&'static [&'static str]),
     /// Text with a unit.
     Quantity(Quantity),
     /// Text with a unit, or one of a few words.
@@ -194,6 +196,7 @@ impl Kind {
             Self::Flag => "`true` or `false`".into(),
             Self::Number => "a number".into(),
             Self::Choice(words) => format!("one of {}", listed(words)),
+            Self::Choices(words) => format!("one or several of {}", listed(words)),
             Self::Quantity(quantity) => Measure::Quantity(quantity).expects(),
             Self::QuantityOr(quantity, words) => format!(
                 "{} or {}",

@@ -21,6 +21,9 @@ const POISSON: f64 = 0.33;
 /// The temperature at which the catalogue starts to count contraction, K.
 const REFERENCE_TEMPERATURE: f64 = 293.0;
 
+/// The lowest temperature that a file may state, K.
+const LOWEST: f64 = 0.01;
+
 /// Most materials that one fault suggests.
 const MOST_SUGGESTED: usize = 5;
 
@@ -48,8 +51,21 @@ pub(super) fn own(file: &Record, collector: &mut Collector) -> Own {
 }
 
 /// Reads the material of a plate.
+///
+/// A plate may state a conductivity in its plane and one through its thickness of its own; they
+/// stand for every temperature.
 pub(super) fn of_plate(plate: &Record, own: &Own, collector: &mut Collector) -> Option<Material> {
-    read(plate.record("material")?, own, collector)
+    let mut material = read(plate.record("material")?, own, collector)?;
+    if plate.is_faulty("conductivity") {
+        return None;
+    }
+    if let Some(stated) = plate.record("conductivity") {
+        let in_plane = stated.number("in_plane")?;
+        material.conductivity = user(in_plane);
+        material.conductivity_fit = Some(constant(in_plane, LOWEST));
+        material.through = Some(user(stated.number("through")?));
+    }
+    Some(material)
 }
 
 /// Two tables with one name.
@@ -183,6 +199,7 @@ fn fresh(record: &Record, collector: &mut Collector) -> Option<Material> {
         family: String::new(),
         conductivity: spread(record.spread("conductivity")?),
         conductivity_fit: None,
+        through: None,
         youngs_modulus: user(record.number("youngs_modulus")?),
         poisson: user(POISSON),
         expansion: user(record.number("expansion")?),
@@ -217,6 +234,9 @@ fn changed(mut material: Material, record: &Record, collector: &mut Collector) -
     if let Some(value) = record.spread("conductivity") {
         material.conductivity = spread(value);
         material.conductivity_fit = None;
+    }
+    if let Some(value) = record.number("through") {
+        material.through = Some(user(value));
     }
     if let Some(value) = record.number("youngs_modulus") {
         material.youngs_modulus = user(value);
@@ -271,16 +291,21 @@ fn hold_from(material: &mut Material, lowest: f64, record: &Record, collector: &
     }
     let conductivity = material.conductivity.value;
     let expansion = material.expansion.value;
-    material.conductivity_fit = Some(ConductivityFit {
-        form: FitForm::LogPolynomial,
-        coefficients: vec![conductivity.log10()],
-        valid: [lowest, REFERENCE_TEMPERATURE],
-        source: "stated in the joint file".into(),
-    });
+    material.conductivity_fit = Some(constant(conductivity, lowest));
     material.contraction = Some(vec![
         (lowest, expansion * (REFERENCE_TEMPERATURE - lowest)),
         (REFERENCE_TEMPERATURE, 0.0),
     ]);
+}
+
+/// A conductivity that holds down to a temperature.
+fn constant(conductivity: f64, lowest: f64) -> ConductivityFit {
+    ConductivityFit {
+        form: FitForm::LogPolynomial,
+        coefficients: vec![conductivity.log10()],
+        valid: [lowest, REFERENCE_TEMPERATURE],
+        source: "stated in the joint file".into(),
+    }
 }
 
 fn user(value: f64) -> Datum {

@@ -56,7 +56,7 @@ const EXCLUSIVE: [&[&[&str]]; 11] = [
     &[&["size"], &["diameter"], &["outline"]],
     &[&["flux"], &["curvature"], &["bimetal"]],
     &[&["bow"], &["flatness_map"]],
-    &[&["film"], &["face"], &["edge"]],
+    &[&["film"], &["face"], &["edge"], &["radiation"]],
     &[&["class"], &["thread", "head"], &["nut_factor"]],
     &[&["rise"], &["resistance"], &["conductance"]],
     &[&["sink"], &["hot", "cold"]],
@@ -102,7 +102,10 @@ impl Written<'_> {
         match DeValue::parse(self.text) {
             Ok(value) => {
                 let node = Node::value(&value, self.start);
-                let wants_text = matches!(kind, Kind::Text | Kind::Name(_) | Kind::Choice(_));
+                let wants_text = matches!(
+                    kind,
+                    Kind::Text | Kind::Name(_) | Kind::Choice(_) | Kind::Choices(_)
+                );
                 if wants_text && matches!(node.form, Form::Number(..) | Form::Flag(_)) {
                     as_text()
                 } else {
@@ -147,8 +150,21 @@ fn set_in(node: &mut Node, section: &'static Section, steps: &[Step], value: Wri
         ));
     }
     match (field.kind, rest) {
+        // Zones and openings are short: one or all of them may be set as a whole.
+        (Kind::List(_), []) if !is_file(section) => {
+            let list = slot(node, section, step)?;
+            let place = match step.index {
+                Some(_) => numbered(list, step)?,
+                None => list,
+            };
+            *place = value.node(field.kind);
+            Ok(())
+        }
         (Kind::List(inner), rest) => {
             let list = slot(node, section, step)?;
+            if !is_file(section) && is_empty(list) {
+                list.form = Form::Table(Vec::new());
+            }
             let (element, rest) = element(list, inner, step, rest)?;
             if rest.is_empty() {
                 return Err(Box::new(
@@ -274,13 +290,13 @@ fn open_spread(node: &mut Node) {
     node.form = Form::Table(entries.collect());
 }
 
-/// The table of a list that a path names: `plate.upper`, `fastener[2]`, or the only one.
-fn element<'n, 's>(
-    list: &'n mut Node,
-    section: &Section,
-    step: &Step,
-    rest: &'s [Step],
-) -> Result<(&'n mut Node, &'s [Step]), Box<Fault>> {
+/// Whether this is the file itself, whose lists of tables are no short values.
+fn is_file(section: &Section) -> bool {
+    section.name == FILE.name
+}
+
+/// A table by its number, `[2]`; a table that stands alone is the first.
+fn numbered<'n>(list: &'n mut Node, step: &Step) -> Result<&'n mut Node, Box<Fault>> {
     if let Form::Table(_) = list.form {
         let only = list.clone();
         list.form = Form::List(vec![only]);
@@ -292,15 +308,36 @@ fn element<'n, 's>(
         )));
     };
     let count = nodes.len();
-    if let Some(index) = step.index {
-        return match nodes.get_mut(index.wrapping_sub(1)) {
-            Some(node) => Ok((node, rest)),
-            None => Err(Box::new(
-                bad(step, format!("the file has no `{}[{index}]`", step.name))
-                    .expecting(format!("expected from 1 to {count}")),
-            )),
-        };
+    let index = step.index.unwrap_or(1);
+    nodes.get_mut(index.wrapping_sub(1)).ok_or_else(|| {
+        Box::new(
+            bad(step, format!("the file has no `{}[{index}]`", step.name))
+                .expecting(format!("expected from 1 to {count}")),
+        )
+    })
+}
+
+/// The table of a list that a path names: `plate.upper`, `fastener[2]`, or the only one.
+fn element<'n, 's>(
+    list: &'n mut Node,
+    section: &Section,
+    step: &Step,
+    rest: &'s [Step],
+) -> Result<(&'n mut Node, &'s [Step]), Box<Fault>> {
+    if step.index.is_some() {
+        return Ok((numbered(list, step)?, rest));
     }
+    if let Form::Table(_) = list.form {
+        let only = list.clone();
+        list.form = Form::List(vec![only]);
+    }
+    let Form::List(nodes) = &mut list.form else {
+        return Err(Box::new(bad(
+            step,
+            format!("`{}` is not a table in the file", step.name),
+        )));
+    };
+    let count = nodes.len();
     let names: Vec<String> = nodes
         .iter()
         .enumerate()

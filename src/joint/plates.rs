@@ -5,10 +5,10 @@ use std::sync::Arc;
 use crate::{
     catalog::Material,
     joint::{
-        Finish, FlatnessMap, Outline, Patch, Plate, Sag, Sink, Source, Zone,
+        Finish, FlatnessMap, Outline, Plate, Sag,
         collector::{Collector, Wording, fault},
         finishes,
-        geometry::{holds_zone, overlap, swallowed},
+        geometry::overlap,
         maps::Tables,
         materials::{self, Own, duplicate},
         patches::{self, Parts},
@@ -279,132 +279,4 @@ fn origin_of_second(
     }
     let (centre, own) = (above.centre(), below.centre());
     Some([centre[0] - own[0], centre[1] - own[1]])
-}
-
-/// Reads where heat enters the first plate.
-pub(super) fn source(upper: &PlateDraft, collector: &mut Collector) -> Option<Source> {
-    let record = match upper.record.record("heated") {
-        Some(record) => record,
-        None if upper.record.has("heated") => return None,
-        None => {
-            collector.assume(
-                upper.record.at("heated"),
-                "uniform flux on the whole outer face",
-                "not stated",
-            );
-            return Some(Source {
-                zone: Zone::Face,
-                isothermal: false,
-            });
-        }
-    };
-    let zone = zone(record, upper, collector)?;
-    let outline = upper.outline.as_ref()?;
-    collector.require(holds_zone(outline, zone) && !falls_out(upper, zone), || {
-        fault(
-            "zone/outside",
-            &record.place,
-            if holds_zone(outline, zone) {
-                format!(
-                    "the heated zone lies in a cut-out of plate `{}`",
-                    upper.name
-                )
-            } else {
-                format!("the heated zone reaches beyond plate `{}`", upper.name)
-            },
-        )
-        .expecting("expected inside the plate")
-        .help(
-            "`centre` is measured from the lower left corner of the plate (round: from its centre; outline: as its points)",
-        )
-    });
-    Some(Source {
-        zone,
-        isothermal: record.text("face") == Some("isothermal"),
-    })
-}
-
-/// Whether a zone lies wholly in the cut-outs of its plate.
-fn falls_out(upper: &PlateDraft, zone: Zone) -> bool {
-    let shape = match zone {
-        Zone::Face => return false,
-        Zone::Rectangle { centre, size } => Patch::Rectangle { centre, size },
-        Zone::Disc { centre, radius } => Patch::Disc { centre, radius },
-    };
-    let cutouts = upper.parts.iter().flat_map(|parts| &parts.cutouts);
-    let cutouts: Vec<Patch> = cutouts.map(|(cutout, _)| cutout.clone()).collect();
-    !cutouts.is_empty() && swallowed(&shape, &cutouts)
-}
-
-fn zone(record: &Record, upper: &PlateDraft, collector: &mut Collector) -> Option<Zone> {
-    let centre = || match record.point("centre") {
-        Some(centre) => Some(centre),
-        None if record.has("centre") => None,
-        None => Some(upper.outline.as_ref()?.centre()),
-    };
-    match (record.has("size"), record.has("diameter")) {
-        (true, true) => {
-            collector.report(two_ways(record, ["size", "diameter"]));
-            None
-        }
-        (true, false) => Some(Zone::Rectangle {
-            size: record.point("size")?,
-            centre: centre()?,
-        }),
-        (false, true) => Some(Zone::Disc {
-            radius: record.number("diameter")? / 2.0,
-            centre: centre()?,
-        }),
-        (false, false) if record.has("centre") => {
-            collector.report(missing(record, "size", "size = [\"60 mm\", \"60 mm\"]"));
-            None
-        }
-        (false, false) => Some(Zone::Face),
-    }
-}
-
-/// Reads where heat leaves the second plate.
-pub(super) fn sink(lower: &PlateDraft, collector: &mut Collector) -> Option<Sink> {
-    let record = match lower.record.record("cooled") {
-        Some(record) => record,
-        None if lower.record.has("cooled") => return None,
-        None => {
-            collector.assume(
-                lower.record.at("cooled"),
-                "the whole back at one temperature",
-                "not stated; a film or an edge changes what the joint adds",
-            );
-            return Some(Sink::IsothermalBack);
-        }
-    };
-    let stated: Vec<&str> = ["film", "temperature", "face", "edge"]
-        .into_iter()
-        .filter(|key| record.has(key))
-        .collect();
-    match stated.as_slice() {
-        ["film"] => record.number("film").map(Sink::Film),
-        ["temperature" | "face"] | ["temperature", "face"] => Some(Sink::IsothermalBack),
-        ["edge"] | ["temperature", "edge"] => {
-            let round = matches!(lower.outline.as_ref()?, Outline::Disc { .. });
-            collector.require(round, || {
-                fault(
-                    "plate/not-round",
-                    &record.span("edge"),
-                    format!("plate `{}` has no rim: it is not round", lower.name),
-                )
-                .expecting("expected a plate with a `diameter`")
-                .help("cool the back: `cooled = { film = \"500 W/(m²·K)\" }`")
-            });
-            Some(Sink::Rim)
-        }
-        [] => {
-            collector.report(missing(record, "film", "film = \"500 W/(m²·K)\""));
-            None
-        }
-        [first, .., last] => {
-            collector.report(two_ways(record, [first, last]));
-            None
-        }
-        [_] => None,
-    }
 }

@@ -29,6 +29,8 @@ pub(super) struct Entry {
 pub(super) enum Value {
     /// Text, a name, a choice.
     Text(String),
+    /// One or several choices.
+    Words(Vec<String>),
     /// `true` or `false`.
     Flag(bool),
     /// A number or a quantity.
@@ -130,6 +132,14 @@ impl Record {
     pub(super) fn text(&self, key: &str) -> Option<&str> {
         match self.value(key)? {
             Value::Text(text) => Some(text),
+            _ => None,
+        }
+    }
+
+    /// One or several choices.
+    pub(super) fn words(&self, key: &str) -> Option<&[String]> {
+        match self.value(key)? {
+            Value::Words(words) => Some(words),
             _ => None,
         }
     }

@@ -3,6 +3,7 @@
 use crate::joint::{
     Bimetal, Sag,
     collector::{Collector, Wording},
+    heating,
     materials::{self, Own},
     plates::two_ways,
     record::Record,
@@ -42,7 +43,7 @@ fn flux(file: &Record, record: &Record, collector: &mut Collector) -> Option<Sag
     }
     record.text("flux")?;
     let service = file.record("service");
-    if let Some(service) = service.filter(|service| !service.has("heat")) {
+    if let Some(service) = service.filter(|_| !heating::states_heat(file)) {
         collector.report(missing(service, "heat", "heat = \"22 W\"").help(
             "sag by `flux = \"heat\"` needs the heat: `heat = \"22 W\"`; or state the flux itself: `flux = \"20 kW/m²\"`",
         ));

@@ -77,6 +77,13 @@ impl Parts {
             Kind::Flag => json!({ "type": "boolean" }),
             Kind::Number => self.measure(Measure::Number, field),
             Kind::Choice(words) => json!({ "enum": words }),
+            Kind::Choices(words) => {
+                let one = json!({ "enum": words });
+                any(&[
+                    one.clone(),
+                    json!({ "type": "array", "items": one, "minItems": 1 }),
+                ])
+            }
             Kind::Quantity(of) => self.quantity(of),
             Kind::QuantityOr(of, words) => any(&[json!({ "enum": words }), self.quantity(of)]),
             Kind::Spread(of) => any(&self.spread(of, field)),

@@ -2,6 +2,7 @@
 
 mod fasteners;
 mod filler;
+mod heat;
 mod plates;
 
 use crate::{
@@ -11,9 +12,10 @@ use crate::{
 
 pub use fasteners::{ENGAGEMENT, FASTENER, FRICTION, PATTERN, TORQUE};
 pub use filler::{FILLER, MEASURED, MEASURED_LAW};
+pub use heat::{CONDUCTIVITY, COOLED, HEATED, ISOLATING, RADIATION};
 pub use plates::{
-    BIMETAL, BOW, COOLED, CUTOUT, FEET, FINISH, FOOT, HEATED, MATERIAL, MATERIAL_INLINE,
-    MICROHARDNESS, PLATE, PLATING, RIB, SAG,
+    BIMETAL, BOW, CUTOUT, FEET, FINISH, FOOT, MATERIAL, MATERIAL_INLINE, MICROHARDNESS, PLATE,
+    PLATING, RIB, SAG,
 };
 
 /// The newest format this version reads.
@@ -138,7 +140,8 @@ pub static SERVICE: Section = Section {
             "heat through the joint",
             "\"22 W\"",
         )
-        .within(1e-12, 1e7),
+        .within(1e-12, 1e7)
+        .default("the sum of the heated zones that state theirs"),
         field(
             "require",
             Kind::Table(&REQUIRE),

@@ -5,6 +5,8 @@ use crate::{
     joint::{
         Case, Limit, Medium, Plane, Requirement, RequirementKind, Service,
         collector::{Collector, Wording, fault},
+        cooling::Back,
+        heating,
         plates::two_ways,
         record::Record,
         sections::{PLANES, RISES},
@@ -19,23 +21,23 @@ const ROOM: f64 = 293.15;
 /// Standard atmosphere, Pa.
 const ATMOSPHERE: f64 = 101_325.0;
 
-/// Reads `[service]`. `sink` is the table `cooled` of the second plate, which may state the
-/// temperature in its place.
+/// Reads `[service]`, with the heat of the joint and what the cooled back of the last plate says
+/// of its temperature, which may stand in place of that of the service.
 pub(super) fn read(
     file: &Record,
-    cooled: Option<&Record>,
+    (heat, back): (Option<f64>, Option<&Back>),
     collector: &mut Collector,
 ) -> Option<Service> {
     let record = file.record("service")?;
     let medium = medium(record, collector);
-    let temperatures = temperatures(record, cooled, collector);
-    let require = require(record, collector);
+    let temperatures = temperatures(record, (heat, back), collector);
+    let require = require(record, heating::states_heat(file), collector);
     let (cases, assembly_temperature) = temperatures?;
     Some(Service {
         medium: medium?,
         cases,
         assembly_temperature,
-        heat: record.number("heat"),
+        heat,
         require: require?,
     })
 }
@@ -85,7 +87,7 @@ fn medium(record: &Record, collector: &mut Collector) -> Option<Medium> {
 
 fn temperatures(
     record: &Record,
-    cooled: Option<&Record>,
+    (heat, back): (Option<f64>, Option<&Back>),
     collector: &mut Collector,
 ) -> Option<(Vec<Case>, f64)> {
     let absent = Record::absent(&record.at("temperature"), &record.place);
@@ -102,7 +104,10 @@ fn temperatures(
             ROOM
         }
     };
-    let back = cooled.filter(|cooled| cooled.has("temperature"));
+    let radiating = back.and_then(|back| back.radiating.as_ref());
+    if let Some(case) = radiating.and_then(|back| back.surface((record, table), heat, collector)) {
+        return Some((vec![case?], assembly));
+    }
     for key in ["hot", "cold"] {
         if table.has("sink") && table.has(key) {
             collector.report(two_ways(table, ["sink", key]));
@@ -118,15 +123,15 @@ fn temperatures(
             });
         }
     }
-    if let Some(back) = back {
-        let temperature = back.number("temperature")?;
+    if let Some((temperature, place)) = back.and_then(|back| back.temperature.as_ref()) {
+        let temperature = *temperature;
         let agrees = cases
             .iter()
             .all(|case| (case.temperature - temperature).abs() < 1e-6);
         collector.require(agrees, || {
             fault(
                 "file/conflict",
-                &back.span("temperature"),
+                place,
                 "the sink has two temperatures: this one and `service.temperature`",
             )
             .expecting("expected one of the two")
@@ -155,12 +160,19 @@ fn temperatures(
             .expecting("expected below `hot`")
         });
     }
+    if let Some(radiating) = radiating {
+        radiating.tell_surroundings(&cases, heat, collector);
+    }
     Some((cases, assembly))
 }
 
 /// The requirement: the outer option is none when it is faulty.
 #[expect(clippy::option_option, reason = "faulty and not stated are two things")]
-fn require(record: &Record, collector: &mut Collector) -> Option<Option<Requirement>> {
+fn require(
+    record: &Record,
+    states_heat: bool,
+    collector: &mut Collector,
+) -> Option<Option<Requirement>> {
     if !record.has("require") {
         return Some(None);
     }
@@ -180,7 +192,7 @@ fn require(record: &Record, collector: &mut Collector) -> Option<Option<Requirem
             return None;
         }
     };
-    if key == "rise" && !record.has("heat") {
+    if key == "rise" && !states_heat {
         collector.report(missing(record, "heat", "heat = \"22 W\"").help(
             "a limit of the rise needs the heat: `heat = \"22 W\"`; without heat require a resistance",
         ));

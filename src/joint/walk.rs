@@ -114,6 +114,7 @@ impl Walk<'_> {
         match stated.field.kind {
             Kind::Text | Kind::Name(_) => self.text(stated).map(Value::Text),
             Kind::Choice(words) => self.choice(stated, words).map(Value::Text),
+            Kind::Choices(words) => self.choices(stated, words).map(Value::Words),
             Kind::Flag => self.flag(stated).map(Value::Flag),
             Kind::Number => self.single(stated, Measure::Number).map(Value::Number),
             Kind::Quantity(quantity) => self

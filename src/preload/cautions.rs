@@ -1,6 +1,7 @@
 //! What the engineer must hear about a group of bolts, the gravest first.
 
 use crate::{
+    catalog::MaterialKind,
     diagnostic::Caution,
     joint::{Engagement, Fastener, Friction, Tightening, TorqueTightening},
     preload::{
@@ -43,6 +44,7 @@ pub fn group_cautions(group: &Group<'_>) -> Vec<Caution> {
     found.extend(over_strength(group));
     found.extend(torque_size(group));
     found.extend(seats(group));
+    found.extend(isolating(group));
     found.extend(threads(group));
     found.extend(tightening(group));
     found
@@ -217,6 +219,44 @@ fn seats(group: &Group<'_>) -> Vec<Caution> {
             format!(
                 "{name}: a countersunk head wedges; its friction radius is divided by sin 45°, and the flat annulus \
                  taken for its seat is an approximation."
+            ),
+        ));
+    }
+    found
+}
+
+/// What isolating washers do to the clamp.
+fn isolating(group: &Group<'_>) -> Vec<Caution> {
+    let Group { name, fastener, .. } = group;
+    let Some(washers) = &fastener.isolating else {
+        return Vec::new();
+    };
+    let material = &washers.material;
+    let pressure = force_band(fastener).high / fastener.head_seat.area();
+    let mut found = Vec::new();
+    if material.kind == MaterialKind::Polymer {
+        found.push(caution(
+            "preload/isolating-creep",
+            format!(
+                "{name}: {:.1} mm of {} stand in the clamp under {:.0} MPa: it creeps, the more the warmer, and the \
+                 clamp force falls with it; the loss is not counted. Re-tighten, or take disc springs or a ceramic.",
+                washers.height() * 1e3,
+                material.name,
+                pressure * 1e-6
+            ),
+        ));
+    }
+    let limit = material.bearing_limit.as_ref();
+    let limit = limit.or(material.yield_strength.as_ref());
+    if let Some(limit) = limit.filter(|limit| pressure > limit.value) {
+        found.push(caution(
+            "preload/head-pressure",
+            format!(
+                "{name}: {:.0} MPa on the isolating washers at the highest force, {} bears {:.0} MPa; they will be \
+                 crushed. A larger seat helps: state `bearing`.",
+                pressure * 1e-6,
+                material.name,
+                limit.value * 1e-6
             ),
         ));
     }

@@ -87,6 +87,7 @@ pub fn m6() -> Fastener {
         }),
         head_plate: 0,
         shank_path: true,
+        isolating: None,
         places: vec![[20e-3, 20e-3], [60e-3, 20e-3]],
     }
 }
@@ -108,6 +109,7 @@ pub fn aluminium() -> Material {
         family: "aluminium".into(),
         conductivity: datum(167.0),
         conductivity_fit: None,
+        through: None,
         youngs_modulus: datum(70e9),
         poisson: datum(0.33),
         expansion: datum(23.6e-6),
@@ -161,8 +163,9 @@ pub fn joint() -> Joint {
         source: Source {
             zone: Zone::Face,
             isothermal: false,
-        },
-        sink: Sink::IsothermalBack,
+        }
+        .into(),
+        sink: Sink::IsothermalBack.into(),
         fasteners: vec![m6()],
         contact: Contact {
             law: Law::ElasticPlastic,

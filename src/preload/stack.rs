@@ -1,7 +1,7 @@
 //! The clamped stack of a fastener in its joint: grip, compliance, guide settling.
 
 use crate::{
-    joint::{Engagement, Fastener, Joint, Plate},
+    joint::{Engagement, Fastener, Isolating, Joint, Plate},
     preload::{
         losses::{Compliance, Contacts, Part, Working, guide_values, peak_to_valley},
         resilience::{
@@ -17,9 +17,11 @@ use crate::{
 pub struct Stack {
     /// Thickness of each clamped plate with its index, head side first, m.
     pub plates: Vec<(usize, f64)>,
-    /// Thickness of all washers, m.
+    /// Thickness of all washers of the bolt's own material, m.
     pub washers: f64,
-    /// Grip: plates and washers, m.
+    /// Thickness of all isolating washers, m.
+    pub isolating: f64,
+    /// Grip: plates and all washers, m.
     pub grip: f64,
     /// Compliance of bolt and clamped parts, m/N.
     pub compliance: Compliance,
@@ -34,6 +36,8 @@ pub struct Strains<'a> {
     pub plates: &'a [f64],
     /// Of the washers.
     pub washers: f64,
+    /// Of the isolating washers.
+    pub isolating: f64,
     /// Of the bolt.
     pub bolt: f64,
 }
@@ -49,7 +53,11 @@ impl Stack {
             length: self.washers,
             strain: strains.washers,
         };
-        let parts: Vec<Part> = plates.chain([washers]).collect();
+        let isolating = Part {
+            length: self.isolating,
+            strain: strains.isolating,
+        };
+        let parts: Vec<Part> = plates.chain([washers, isolating]).collect();
         self.compliance.temperature_gain(
             &parts,
             Part {
@@ -64,7 +72,7 @@ impl Stack {
 ///
 /// With a nut every plate is clamped; with a tapped hole or insert only the plates on the head's side of the
 /// far one. Taken: thread free over the whole grip, head as long as a hexagon's, washers steel rings of the
-/// seat's annulus (with a nut one at each end), an insert as stiff as the plate that holds it, and as outer diameter twice the distance to the nearest
+/// seat's annulus (with a nut one at each end), isolating washers rings of their own material there, an insert as stiff as the plate that holds it, and as outer diameter twice the distance to the nearest
 /// plate edge or the distance to the nearest bolt of the group, whichever is smaller. A longer plain shank
 /// makes the bolt stiffer and the losses larger.
 ///
@@ -85,7 +93,8 @@ pub fn stack(joint: &Joint, fastener: &Fastener) -> Stack {
         .map(|&index| (index, joint.plates[index].thickness))
         .collect();
     let washers = fastener.washer_thickness;
-    let grip = washers + plates.iter().map(|(_, thickness)| thickness).sum::<f64>();
+    let isolating = fastener.isolating.as_ref().map_or(0.0, Isolating::height);
+    let grip = washers + isolating + plates.iter().map(|(_, thickness)| thickness).sum::<f64>();
     Stack {
         compliance: Compliance {
             bolt: bolt_compliance(&BoltShape {
@@ -106,6 +115,7 @@ pub fn stack(joint: &Joint, fastener: &Fastener) -> Stack {
         contacts: contacts(fastener, plates.len()),
         plates,
         washers,
+        isolating,
         grip,
     }
 }
@@ -135,15 +145,20 @@ fn from_head(joint: &Joint, fastener: &Fastener) -> Vec<usize> {
 
 fn contacts(fastener: &Fastener, clamped: usize) -> Contacts {
     let plates = clamped as u32;
+    let washers = fastener.washers
+        + fastener
+            .isolating
+            .as_ref()
+            .map_or(0, |washers| washers.count);
     match fastener.engagement {
         // Between n clamped plates lie n − 1 interfaces, with a tapped plate behind them n.
         Engagement::Nut => Contacts {
             seats: 2,
-            interfaces: plates - 1 + fastener.washers,
+            interfaces: plates - 1 + washers,
         },
         Engagement::Tapped { .. } | Engagement::Insert { .. } => Contacts {
             seats: 1,
-            interfaces: plates + fastener.washers,
+            interfaces: plates + washers,
         },
     }
 }
@@ -177,7 +192,11 @@ fn parts_compliance(joint: &Joint, fastener: &Fastener, plates: &[(usize, f64)])
     // Washers are taken to be of the bolt's material.
     let washers = fastener.washer_thickness / fastener.grade.youngs_modulus
         * seat_pressure(&fastener.head_seat, 1.0);
-    washers + stack_compliance(&clamped, &layers)
+    // Isolating washers are taken as prisms under the seat, too thin for a cone.
+    let isolating = fastener.isolating.as_ref().map_or(0.0, |washers| {
+        washers.height() / (washers.material.youngs_modulus.value * fastener.head_seat.area())
+    });
+    washers + isolating + stack_compliance(&clamped, &layers)
 }
 
 /// Diameter of plate that belongs to one bolt, smallest of the group, m.
@@ -295,6 +314,7 @@ mod tests {
         let equal = Strains {
             plates: &[1e-3, 1e-3],
             washers: 1e-3,
+            isolating: 1e-3,
             bolt: 1e-3,
         };
         assert!(found.temperature_gain(&equal).abs() < 1e-6);

@@ -54,11 +54,27 @@ pub(super) const ENTRIES: &[Entry] = &[
         "Add `at = [[\"7 mm\", \"7 mm\"], …]` or a `pattern`.",
     ),
     fault(
+        "zone/heat-sum",
+        "Heated zones that do not add up to the heat",
+        "Each of several zones states its own heat, and their sum is the heat of the joint. The service \
+         states another.",
+        "Correct one of them, or leave the heat of the service out.",
+    ),
+    fault(
+        "cooled/too-much-heat",
+        "More heat than the back can radiate",
+        "At the temperature stated for the sink surface the back radiates less than the heat of the joint, \
+         even to surroundings at absolute zero.",
+        "State the surroundings (`radiation = { emissivity = 0.8, temperature = \"-60 °C\" }`) and leave the \
+         temperature of the service out: the sink then takes the temperature that gives off the heat. Or \
+         enlarge the back, or coat it.",
+    ),
+    fault(
         "zone/outside",
         "A heated or cooled zone off its plate",
         "The zone reaches beyond the face it stands on, so part of its heat would enter nowhere.",
-        "Check its centre and size; both are in the coordinates of the joint, from the lower left \
-         corner of the first plate.",
+        "Check its centre and size; both are in the coordinates of its own plate, from the lower left \
+         corner (round plate: its centre; outline: as its points).",
     ),
     fault(
         "service/cold-contact",
@@ -96,6 +112,12 @@ pub(super) const ENTRIES: &[Entry] = &[
         "A rim asked of a plate that is not round",
         "Cooling at the rim is defined for round plates.",
         "Cool the back of a rectangular plate: `cooled = { film = \"500 W/(m²·K)\" }` or `{ face = \"isothermal\" }`.",
+    ),
+    fault(
+        "plate/no-such-edge",
+        "An edge asked of a plate that has none",
+        "Straight edges by name (`left`, `right`, `lower`, `upper`, `all`) belong to plates with a `size`.",
+        "Cool a round plate at its rim (`edge = \"rim\"`), one with an `outline` on zones of its back.",
     ),
     fault(
         "plate/heads-overlap",

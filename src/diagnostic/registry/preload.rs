@@ -176,6 +176,17 @@ pub(super) const ENTRIES: &[Entry] = &[
         ],
     ),
     Range.entry(
+        "preload/isolating-creep",
+        "Isolating washers of a polymer creep",
+        [
+            "Polymers and their laminates yield slowly under a standing load, faster when warm. Washers \
+             of them in the clamp lose thickness, and the bolt its force; no law of that loss is \
+             applied here.",
+            "Re-tighten after the first warm hours, use disc springs or a longer bolt, a thinner washer \
+             of glass-fibre laminate, or a ceramic. Measure the force left before you rely on it.",
+        ],
+    ),
+    Range.entry(
         "preload/settling-small-screw",
         "Small screw or short grip",
         [

@@ -180,7 +180,7 @@ const SMALL_SOURCE: f64 = 3.0;
 
 /// The plan grid takes the flux under a source as even through the plate, which a small source is not.
 fn small_source(joint: &Joint) -> Option<Caution> {
-    let width = match joint.source.zone {
+    let width = match joint.source.alone()?.zone {
         Zone::Face => return None,
         Zone::Rectangle { size, .. } => size[0].min(size[1]),
         Zone::Disc { radius, .. } => 2.0 * radius,

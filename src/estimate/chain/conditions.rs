@@ -20,7 +20,9 @@ pub struct Conditions {
     pub forces: Vec<f64>,
     /// The faces: local conductance against pressure.
     pub faces: Faces,
-    /// Conductivity of both plates, W/(m K).
+    /// Mean temperature of the sink surface, K.
+    pub temperature: f64,
+    /// Conductivity of both plates, W/(m K); in the plane where that through a plate differs.
     pub conductivity: [f64; 2],
     /// Conductance of each shank, W/K.
     pub shanks: Vec<f64>,
@@ -91,6 +93,7 @@ impl Chain<'_> {
                 local: interface.prepare(),
                 per_pascal,
             },
+            temperature,
             conductivity: [
                 surfaces::conductivity(joint.warm(), temperature, at.conductivity[0])?,
                 surfaces::conductivity(joint.cold(), temperature, at.conductivity[1])?,
@@ -127,10 +130,20 @@ impl Chain<'_> {
     /// Conductance of each bolt's shank from head to nut, W/K.
     ///
     /// ```text
-    /// G = k A_s/(l_K + 0.9 d)
+    /// 1/G = (l_K + 0.9 d)/(k A_s) + n t/(k_w A_w)
     /// ```
     ///
-    /// The contacts under head and nut conduct far better than the shank and are left out.
+    /// | symbol | quantity | SI unit | field |
+    /// |---|---|---|---|
+    /// | `k`, `A_s` | conductivity of the bolt, stress area | W/(m K), m² | `grade`, `thread` |
+    /// | `l_K` | grip, all washers included | m | |
+    /// | `d` | nominal diameter | m | `thread` |
+    /// | `n t`, `k_w` | height and conductivity of isolating washers | m, W/(m K) | `isolating` |
+    /// | `A_w` | annulus under the head | m² | `head_seat` |
+    ///
+    /// The contacts under head and nut conduct far better than the shank and are left out; those on
+    /// isolating washers would isolate more. A bush touches no shank that stands free in its hole.
+    /// Checked: `isolating_washers_stand_in_series_with_the_shank`.
     fn shanks(&self, temperature: f64) -> Result<Vec<f64>, Failure> {
         let by_group = self
             .joint
@@ -147,7 +160,16 @@ impl Chain<'_> {
                     .map_err(|fault| Failure::Cold(fault.to_string()))?;
                 let thread = &fastener.thread;
                 let length = group.stack.grip + SHANK_ENDS * thread.diameter;
-                Ok(conductivity * thread.stress_area / length)
+                let mut resistance = length / (conductivity * thread.stress_area);
+                if let Some(washers) = &fastener.isolating {
+                    let own = washers
+                        .material
+                        .conductivity_at(temperature)
+                        .map_err(|fault| Failure::Cold(fault.to_string()))?;
+                    let conducts = own * washers.material.through_ratio();
+                    resistance += washers.height() / (conducts * fastener.head_seat.area());
+                }
+                Ok(resistance.recip())
             })
             .collect::<Result<Vec<f64>, Failure>>()?;
         Ok(self.group_of.iter().map(|group| by_group[*group]).collect())

@@ -1,7 +1,10 @@
 //! Fields of fasteners.
 
 use crate::{
-    joint::fields::{Catalogue, Field, Kind, Measure, Section, field},
+    joint::{
+        fields::{Catalogue, Field, Kind, Measure, Section, field},
+        sections::ISOLATING,
+    },
     units::Quantity,
 };
 
@@ -116,6 +119,13 @@ pub static FASTENER: Section = Section {
             "true",
         )
         .default("true"),
+        field(
+            "isolating",
+            Kind::Table(&ISOLATING),
+            "isolating washers that keep the heat of the plates from the bolt",
+            "{ material = \"G-10\", thickness = \"1 mm\" }",
+        )
+        .default("none"),
         field(
             "at",
             Kind::Points,

@@ -1,7 +1,10 @@
 //! Fields of plates, materials and faces.
 
 use crate::{
-    joint::fields::{Catalogue, Field, Kind, Measure, Section, field},
+    joint::{
+        fields::{Catalogue, Field, Kind, Measure, Section, field},
+        sections::{CONDUCTIVITY, COOLED, HEATED},
+    },
     units::Quantity,
 };
 
@@ -29,6 +32,12 @@ pub static PLATE: Section = Section {
             "\"Al 6061-T6\"",
         )
         .required(),
+        field(
+            "conductivity",
+            Kind::Table(&CONDUCTIVITY),
+            "conductivity in the plane and through the thickness where they differ, in place of the material's",
+            "{ in_plane = \"400 W/(m·K)\", through = \"5 W/(m·K)\" }",
+        ),
         length("thickness", "thickness", "\"5 mm\"")
             .within(1e-6, 10.0)
             .required(),
@@ -108,15 +117,15 @@ pub static PLATE: Section = Section {
         ),
         field(
             "heated",
-            Kind::Table(&HEATED),
-            "first plate only: where heat enters the outer face",
+            Kind::List(&HEATED),
+            "first plate only: where heat enters the outer face; one zone, or several with their heat",
             "{ centre = [\"80 mm\", \"60 mm\"], size = [\"60 mm\", \"60 mm\"] }",
         )
         .default("uniform flux on the whole outer face"),
         field(
             "cooled",
-            Kind::Table(&COOLED),
-            "second plate only: where heat leaves",
+            Kind::List(&COOLED),
+            "second plate only: where heat leaves; one table, or several cooled to one temperature",
             "{ film = \"500 W/(m²·K)\" }",
         )
         .default("the whole back at one temperature"),
@@ -344,73 +353,6 @@ pub static BOW: Section = Section {
     ],
 };
 
-/// `heated` of the first plate.
-pub static HEATED: Section = Section {
-    name: "heated",
-    meaning: "where heat enters the outer face of the first plate",
-    shorthand: None,
-    fields: &[
-        field(
-            "centre",
-            Kind::Point,
-            "centre of the heated zone",
-            "[\"80 mm\", \"60 mm\"]",
-        )
-        .within(-100.0, 100.0)
-        .default("the centre of the plate"),
-        field(
-            "size",
-            Kind::Point,
-            "width and height of the heated zone",
-            "[\"60 mm\", \"60 mm\"]",
-        )
-        .within(1e-5, 100.0),
-        length("diameter", "diameter of a round heated zone", "\"20 mm\""),
-        field(
-            "face",
-            Kind::Choice(&["flux", "isothermal"]),
-            "uniform flux, or one temperature over the zone",
-            "\"isothermal\"",
-        )
-        .default("flux"),
-    ],
-};
-
-/// `cooled` of the second plate.
-pub static COOLED: Section = Section {
-    name: "cooled",
-    meaning: "where heat leaves the second plate: one of film, temperature, face, edge",
-    shorthand: None,
-    fields: &[
-        field(
-            "film",
-            Kind::Quantity(Quantity::FilmCoefficient),
-            "heat transfer coefficient on the whole back",
-            "\"500 W/(m²·K)\"",
-        )
-        .within(1e-3, 1e8),
-        field(
-            "temperature",
-            Kind::Quantity(Quantity::Temperature),
-            "temperature of the whole back",
-            "\"20 °C\"",
-        )
-        .within(0.01, 2000.0),
-        field(
-            "face",
-            Kind::Choice(&["isothermal"]),
-            "the whole back at one temperature",
-            "\"isothermal\"",
-        ),
-        field(
-            "edge",
-            Kind::Choice(&["rim"]),
-            "the rim of a round plate at one temperature, the back insulated",
-            "\"rim\"",
-        ),
-    ],
-};
-
 /// `[[material]]`.
 pub static MATERIAL: Section = Section {
     name: "material",
@@ -430,7 +372,7 @@ pub static MATERIAL_INLINE: Section = Section {
 /// Kinds of material.
 pub const MATERIAL_KINDS: [&str; 4] = ["metal", "brittle", "polymer", "graphite"];
 
-static MATERIAL_FIELDS: [Field; 15] = [
+static MATERIAL_FIELDS: [Field; 16] = [
     field("name", Kind::Text, "name", "\"my plate\""),
     field(
         "like",
@@ -458,6 +400,14 @@ static MATERIAL_FIELDS: [Field; 15] = [
         "\"167 W/(m·K)\"",
     )
     .within(1e-3, 1e5),
+    field(
+        "through",
+        Kind::Quantity(Quantity::Conductivity),
+        "thermal conductivity through the thickness of a plate, where it differs from that in its plane",
+        "\"5 W/(m·K)\"",
+    )
+    .within(1e-3, 1e5)
+    .default("as conductivity"),
     field(
         "youngs_modulus",
         Kind::Quantity(Quantity::Pressure),

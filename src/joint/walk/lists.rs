@@ -70,6 +70,30 @@ impl Walk<'_> {
         (records.len() == nodes.len()).then_some(records)
     }
 
+    /// One word, or a list of them.
+    pub(super) fn choices(
+        &mut self,
+        stated: Stated<'_>,
+        words: &[&'static str],
+    ) -> Option<Vec<String>> {
+        let nodes = match &stated.node.form {
+            Form::List(nodes) if nodes.is_empty() => {
+                self.wrong(stated);
+                return None;
+            }
+            Form::List(nodes) => nodes.as_slice(),
+            _ => std::slice::from_ref(stated.node),
+        };
+        if !self.few_enough(stated, nodes.len()) {
+            return None;
+        }
+        let found: Vec<String> = nodes
+            .iter()
+            .filter_map(|node| self.choice(Stated { node, ..stated }, words))
+            .collect();
+        (found.len() == nodes.len()).then_some(found)
+    }
+
     pub(super) fn per_plate(&mut self, stated: Stated<'_>, measure: Measure) -> Option<PerPlate> {
         match &stated.node.form {
             Form::List(nodes) => self.two(stated, nodes, [measure; 2]).map(PerPlate::Each),

@@ -59,8 +59,13 @@ impl Walk<'_> {
                     "name/unknown",
                     &stated.node.span,
                     format!(
-                        "`{}` is not a {} this file can name",
+                        "`{}` is not {} {} this file can name",
                         short(&text),
+                        if stated.field.key.starts_with(['a', 'e', 'i', 'o', 'u']) {
+                            "an"
+                        } else {
+                            "a"
+                        },
                         stated.field.key
                     ),
                 )

@@ -5,6 +5,7 @@ mod edges;
 mod heat;
 mod problem;
 mod readings;
+mod terminals;
 
 use std::sync::{Arc, OnceLock};
 
@@ -90,7 +91,7 @@ impl Solver for Columns {
         let plates = self.bank.plates(joint, level, &field)?;
         let mut faces: Conductances = conductances(&field, self.bank.order, (conditions, factors));
         let (heat, path) = plates
-            .solve(&faces, factors.conductivity(conditions), &conditions.shanks)
+            .solve(&faces, factors.conductivity(conditions), conditions)
             .map_err(Failure::Heat)?;
         Ok(Arc::new(OnColumns {
             field,

@@ -5,33 +5,31 @@ use std::sync::{Arc, Mutex, PoisonError};
 use crate::{
     estimate::chain::{
         conditions::Conditions,
-        elastic::{columns::problem::Order, solver::Factors},
+        elastic::{
+            columns::{problem::Order, terminals::Ends},
+            solver::Factors,
+        },
     },
-    joint::{Engagement, Joint, Outline, Sink},
+    joint::Joint,
     pressure::elastic::{Field, Mesh},
     resistance::{
         self, Path,
-        columns::{
-            self, Body, Bolt, Conduction, Conductivity, Edge, Heat, Meeting, Perfect, Rim, Seat,
-            Slab, Source, Stack, Terminals, Zone,
-        },
+        columns::{Body, Conduction, Conductivity, Heat, Meeting, Perfect, Slab, Stack, Terminals},
     },
 };
 
-/// Wall beside a thread that takes its heat, in hole radii (judgement: it stands for the threads,
-/// and the resistance of the bolt hardly feels it).
-const WALL: f64 = 1.25;
+/// Temperatures nearer to each other are the same, K.
+const SAME: f64 = 1e-9;
 
 /// The plates as heat meets them.
 #[derive(Debug)]
 pub(super) struct Plates {
     stack: Arc<Stack>,
-    source: Source,
-    sinks: Vec<columns::Sink>,
-    /// Bolts without conductance: places and seats.
-    bolts: Vec<Bolt>,
-    /// Perfect contact met so far.
-    perfect: Mutex<Vec<Perfect>>,
+    terminals: Ends,
+    /// Conductivity through every plate over that in its plane.
+    through: Vec<f64>,
+    /// Perfect contact met so far, with the sink temperature where the back radiates, K.
+    perfect: Mutex<Vec<(f64, Perfect)>>,
 }
 
 /// Local conductance of every column of every part of every interface, W/(m² K).
@@ -70,9 +68,12 @@ impl Plates {
         }
         Ok(Self {
             stack: Arc::new(stack),
-            source: source(joint),
-            sinks: sinks(joint),
-            bolts: bolts(joint),
+            terminals: Ends::of(joint),
+            through: joint
+                .plates
+                .iter()
+                .map(|plate| plate.material.through_ratio())
+                .collect(),
             perfect: Mutex::new(Vec::new()),
         })
     }
@@ -81,16 +82,26 @@ impl Plates {
     pub(super) fn solve(
         &self,
         conductances: &Conductances,
-        conductivity: [f64; 2],
-        shanks: &[f64],
+        in_plane: [f64; 2],
+        conditions: &Conditions,
     ) -> Result<(Heat, Path), resistance::Failure> {
-        let conductivity = conductivity.map(Conductivity::isotropic);
-        let terminals = self.terminals(shanks);
+        let conductivity: Vec<Conductivity> = in_plane
+            .iter()
+            .zip(&self.through)
+            .map(|(k, ratio)| Conductivity::layered(*k, ratio * k))
+            .collect();
+        let terminals = self.terminals.under(conditions);
+        // Where nothing radiates one perfect contact serves all temperatures.
+        let temperature = if self.terminals.radiates() {
+            conditions.temperature
+        } else {
+            0.0
+        };
         // Each load starts afresh, so that the order of the threads moves no digit.
         let mut conduction = Conduction::new(&self.stack, &terminals, &conductivity)?;
         let (heat, perfect) = rayon::join(
             || conduction.solve(conductances),
-            || self.perfect(&terminals, &conductivity),
+            || self.perfect(temperature, (&terminals, &conductivity)),
         );
         let (heat, perfect) = (heat?, perfect?);
         let mut path = heat.path(&perfect);
@@ -102,39 +113,29 @@ impl Plates {
             path.added_by_joint = path.source_to_sink - floor;
             path.resistance_lower = floor.max(heat.one_dimensional);
         }
+        if self.terminals.radiates() {
+            // What lies beyond the slope of a radiating back is no coolant.
+            path.coolant_drop = None;
+        }
         path.checked("heat through the columns")?;
         Ok((heat, path))
     }
 
     fn perfect(
         &self,
-        terminals: &Terminals,
-        conductivity: &[Conductivity],
+        temperature: f64,
+        (terminals, conductivity): (&Terminals, &[Conductivity]),
     ) -> Result<Perfect, resistance::Failure> {
         let known = || self.perfect.lock().unwrap_or_else(PoisonError::into_inner);
-        let serves = |perfect: &&Perfect| perfect.serves(terminals, conductivity);
-        if let Some(perfect) = known().iter().find(serves) {
+        let serves = |(at, perfect): &&(f64, Perfect)| {
+            (at - temperature).abs() < SAME && perfect.serves(terminals, conductivity)
+        };
+        if let Some((_, perfect)) = known().iter().find(serves) {
             return Ok(perfect.clone());
         }
         let perfect = Perfect::new(&self.stack, terminals, conductivity)?;
-        known().push(perfect.clone());
+        known().push((temperature, perfect.clone()));
         Ok(perfect)
-    }
-
-    fn terminals(&self, shanks: &[f64]) -> Terminals {
-        Terminals {
-            source: self.source.clone(),
-            sinks: self.sinks.clone(),
-            bolts: self
-                .bolts
-                .iter()
-                .zip(shanks)
-                .map(|(bolt, strength)| Bolt {
-                    strength: *strength,
-                    ..*bolt
-                })
-                .collect(),
-        }
     }
 }
 
@@ -231,74 +232,4 @@ fn meeting(mesh: &Mesh, interface: usize) -> Vec<Meeting> {
         });
     }
     parts
-}
-
-fn source(joint: &Joint) -> Source {
-    let zone = Zone::from(joint.source.zone);
-    if joint.source.isothermal {
-        Source::Isothermal(vec![zone])
-    } else {
-        Source::Flux(vec![(zone, 1.0)])
-    }
-}
-
-fn sinks(joint: &Joint) -> Vec<columns::Sink> {
-    match joint.sink {
-        Sink::IsothermalBack => vec![columns::Sink::Held(Zone::Face)],
-        Sink::Film(coefficient) => vec![columns::Sink::Film {
-            zone: Zone::Face,
-            coefficient,
-        }],
-        Sink::Rim => match &joint.cold().outline {
-            Outline::Disc { radius } => vec![columns::Sink::Rim(Rim::Round {
-                centre: joint.cold().origin,
-                radius: *radius,
-            })],
-            // Of a polygon the outermost cells in every row of the grid.
-            Outline::Rectangle { .. } | Outline::Polygon { .. } => {
-                [Edge::West, Edge::East, Edge::South, Edge::North]
-                    .map(|edge| columns::Sink::Rim(Rim::Straight(edge)))
-                    .to_vec()
-            }
-        },
-    }
-}
-
-/// Heads and seats of the bolts on the outer faces, warm side first.
-fn bolts(joint: &Joint) -> Vec<Bolt> {
-    joint
-        .bolts()
-        .map(|(fastener, at)| {
-            let head = ring(fastener.head_seat);
-            let nut = fastener.nut_seat.map_or(head, ring);
-            let below = usize::from(fastener.head_plate == 0);
-            let wall = fastener.hole_radius[below].max(0.5 * fastener.thread.diameter);
-            let wall = [0.0, WALL * wall];
-            let (above, seat) = match (fastener.engagement, below) {
-                (Engagement::Nut, 1) => (head, Seat::Nut { annulus: nut }),
-                (Engagement::Nut, _) => (nut, Seat::Nut { annulus: head }),
-                (Engagement::Tapped { length } | Engagement::Insert { length }, 1) => {
-                    let seat = Seat::Thread {
-                        annulus: wall,
-                        depth: length,
-                    };
-                    (head, seat)
-                }
-                // The thread is in the warm plate: it takes its heat from around the hole.
-                (Engagement::Tapped { .. } | Engagement::Insert { .. }, _) => {
-                    (wall, Seat::Nut { annulus: head })
-                }
-            };
-            Bolt {
-                at,
-                head: above,
-                seat,
-                strength: 0.0,
-            }
-        })
-        .collect()
-}
-
-fn ring(seat: crate::joint::Seat) -> [f64; 2] {
-    [seat.inner_radius, seat.outer_radius]
 }

@@ -1,7 +1,10 @@
 //! A joint as the elastic contact takes it: bodies of layers, interfaces, bolts.
 
 use crate::{
-    estimate::{Failure, Watch, chain::elastic::variant::Variant},
+    estimate::{
+        Failure, Watch,
+        chain::elastic::{columns::terminals::heat_zones, variant::Variant},
+    },
     joint::{self, Engagement, FaceFriction, Fastener, HeadModel, Joint, Plate, Zone},
     pressure::elastic::{
         self, Annulus, Body, Bolt, Cover, End, Faces, Fineness, Head, Height, Interface, Layer,
@@ -253,16 +256,18 @@ fn ends(fastener: &Fastener, order: Order, plates: usize) -> (Annulus, End) {
     }
 }
 
-/// Where grid lines are wanted: straight edges of plates and of the heated zone.
+/// Where grid lines are wanted: straight edges of plates and of heated and cooled zones.
 fn stops(joint: &Joint, axis: usize) -> Vec<f64> {
     let mut found: Vec<f64> = joint
         .plates
         .iter()
         .flat_map(|plate| plate.stops(axis))
         .collect();
-    if let Zone::Rectangle { centre, size } = joint.source.zone {
-        found.push(centre[axis] - 0.5 * size[axis]);
-        found.push(centre[axis] + 0.5 * size[axis]);
+    for zone in heat_zones(joint) {
+        if let Zone::Rectangle { centre, size } = zone {
+            found.push(centre[axis] - 0.5 * size[axis]);
+            found.push(centre[axis] + 0.5 * size[axis]);
+        }
     }
     found
 }

@@ -21,6 +21,8 @@ pub(super) struct Shape {
     pub(super) bearing_radius: f64,
     pub(super) rim_radius: f64,
     thickness: [f64; 2],
+    /// Conductivity through either plate over that in its plane.
+    through: [f64; 2],
     inlet: Inlet,
     outlet: Outlet,
 }
@@ -67,7 +69,8 @@ impl Shape {
         let bare = joint.is_flat()
             && joint.contact.compliance == Compliance::Hard
             && joint.filler.as_ref().and_then(Filler::stiffness).is_none();
-        let patch = match joint.source.zone {
+        let (source, sink) = (joint.source.alone()?, joint.sink.alone()?);
+        let patch = match source.zone {
             Zone::Face => Patch::Face,
             Zone::Disc { centre, radius } if centred(centre) && radius > hole => {
                 Patch::Annulus([hole, radius])
@@ -80,12 +83,13 @@ impl Shape {
             bearing_radius: head.outer_radius,
             rim_radius: *radius,
             thickness: [first.thickness, second.thickness],
-            inlet: if joint.source.isothermal {
+            through: [first, second].map(|plate| plate.material.through_ratio()),
+            inlet: if source.isothermal {
                 Inlet::Isothermal(patch)
             } else {
                 Inlet::Flux(patch)
             },
-            outlet: match joint.sink {
+            outlet: match sink {
                 Sink::IsothermalBack => Outlet::IsothermalBack,
                 Sink::Film(coefficient) => Outlet::Film(coefficient),
                 Sink::Rim => Outlet::Rim,
@@ -119,8 +123,8 @@ impl Shape {
         }
     }
 
-    /// The heat through plates that touch up to a radius (m), for the conductivity of both plates
-    /// and the conductance of the shank.
+    /// The heat through plates that touch up to a radius (m), for the conductivity in the plane of
+    /// both plates and the conductance of the shank.
     pub(super) fn heat(
         &self,
         contact_radius: f64,
@@ -131,7 +135,7 @@ impl Shape {
                 hole_radius: self.hole_radius,
                 rim_radius: self.rim_radius,
                 thickness: self.thickness[plate],
-                conductivity: [conductivity[plate]; 2],
+                conductivity: [1.0, self.through[plate]].map(|ratio| ratio * conductivity[plate]),
             }),
             bearing_radius: self.bearing_radius,
             contact_radius,
