@@ -100,13 +100,13 @@ fn layout_cases_are_met_when_fine() {
     meets(&bowed, (CASE_II_CONCAVE, 3.949e-3), &allowed);
 }
 
-// The study asks 9 % of pressure here; cells of the seat's own width miss case i by 10 %.
+// What the study asks of its own fast grid.
 #[test]
-fn layout_cases_are_nearly_met_when_fast() {
+fn layout_cases_are_met_when_fast() {
     let allowed = Allowed {
         gap: 0.08,
-        pressure: 0.11,
-        radius: 0.02,
+        pressure: 0.09,
+        radius: 0.005,
     };
     let fast = Fineness::Fast;
     meets(&case_i(fast), (CASE_I, 4.328e-3), &allowed);
