@@ -9,7 +9,7 @@ mod joints;
 use std::time::Instant;
 
 use joints::{Plates, case_i, case_ii, crossings};
-use ringsum::pressure::elastic::{Field, Fineness, size, solve};
+use ringsum::pressure::elastic::{Field, Fineness, Through, size, solve};
 
 const RUNS: usize = 3;
 
@@ -31,8 +31,8 @@ fn sixteen(fineness: Fineness) -> Plates {
 }
 
 fn main() {
-    // A case by name alone, for a profile or its memory: `case_i`, `case_ii`, `sixteen`; a
-    // fineness; `once`.
+    // A case by name alone, for a profile or its memory: `case_i`, `case_ii`, `sixteen`,
+    // `growth`; a fineness; `once`.
     let only: Vec<String> = std::env::args()
         .skip(1)
         .filter(|word| !word.starts_with('-'))
@@ -44,7 +44,6 @@ fn main() {
         "{:8} {:7} {:>8} {:>5} {:>4} {:>8} {:>8} {:>7} {:>9} {:>8}  levels",
         "case", "", "unknowns", "steps", "CG", "1 thread", "2", "MB est.", "gap max", "p max"
     );
-    let mut times = Vec::new();
     let cases: [Case; 3] = [
         ("case_i", case_i),
         ("case_ii", case_ii),
@@ -59,15 +58,65 @@ fn main() {
         ] {
             let words = [name.to_string(), format!("{fineness:?}")];
             if only.iter().all(|word| words.contains(word)) {
-                times.push(shown(&words, &plates(fineness)));
+                shown(&words, &plates(fineness));
             }
         }
     }
-    let large: Vec<_> = times.iter().filter(|time| time.0 > 4e4).collect();
-    if let (Some(first), Some(last)) = (large.first(), large.last()) {
-        let power = (last.1 / first.1).ln() / (last.0 / first.0).ln();
-        println!("time grows with unknowns to the power {power:.2}");
+    if only.is_empty() || only.iter().any(|word| word == "growth") {
+        growth();
     }
+}
+
+/// One plate pair on finer and finer even grids, one thread: time and memory against unknowns.
+fn growth() {
+    println!(
+        "{:>8} {:>5} {:>4} {:>8} {:>9}",
+        "unknowns", "steps", "CG", "seconds", "peak MB"
+    );
+    let pool = rayon::ThreadPoolBuilder::new()
+        .num_threads(1)
+        .build()
+        .expect("a thread can be started");
+    let mut times = Vec::new();
+    for widest in [1.9e-3, 1.4e-3, 1.0e-3, 0.7e-3, 0.48e-3] {
+        let plates = Plates {
+            widest: Some(widest),
+            through: Some(Through {
+                elements: 1,
+                degree: 3,
+            }),
+            ..case_i(Fineness::Coarse)
+        };
+        let (seconds, field) = (0..RUNS)
+            .map(|_| {
+                let start = Instant::now();
+                let field = pool.install(|| plates.field());
+                (start.elapsed().as_secs_f64(), field)
+            })
+            .min_by(|a, b| a.0.total_cmp(&b.0))
+            .expect("there are runs");
+        let health = &field.health;
+        println!(
+            "{:8} {:5} {:4} {:8.2} {:>9}",
+            health.unknowns,
+            health.newton_steps,
+            health.cg_iterations,
+            seconds,
+            peak_megabytes().map_or_else(|| "?".into(), |peak| format!("{peak:.0}")),
+        );
+        times.push(((health.unknowns as f64).ln(), seconds.ln()));
+    }
+    let (first, last) = (times[0], times[times.len() - 1]);
+    let power = (last.1 - first.1) / (last.0 - first.0);
+    println!("time grows with unknowns to the power {power:.2}");
+}
+
+/// Most memory this process has held, where the system tells.
+fn peak_megabytes() -> Option<f64> {
+    let status = std::fs::read_to_string("/proc/self/status").ok()?;
+    let line = status.lines().find(|line| line.starts_with("VmHWM"))?;
+    let kilobytes: f64 = line.split_whitespace().nth(1)?.parse().ok()?;
+    Some(kilobytes * 1e-3)
 }
 
 /// One solution, for a profile or for the memory of the process.
@@ -94,8 +143,8 @@ fn once(words: &[String]) {
     );
 }
 
-/// Unknowns and seconds on one thread.
-fn shown(words: &[String; 2], plates: &Plates) -> (f64, f64) {
+/// Times on one thread and on two.
+fn shown(words: &[String; 2], plates: &Plates) {
     plates.posed(|problem| {
         let best = |threads: usize| -> (f64, Field) {
             let pool = rayon::ThreadPoolBuilder::new()
@@ -129,6 +178,5 @@ fn shown(words: &[String; 2], plates: &Plates) -> (f64, f64) {
             field.peak_pressure() * 1e-6,
             health.levels,
         );
-        (health.unknowns as f64, one)
-    })
+    });
 }

@@ -26,6 +26,8 @@ pub struct Plates {
     pub thread: Option<f64>,
     pub through: Option<Through>,
     pub fineness: Fineness,
+    /// Widest distance between lines; none leaves it to the fineness.
+    pub widest: Option<f64>,
     pub most_bytes: u64,
 }
 
@@ -48,6 +50,7 @@ impl Plates {
             thread: None,
             through: None,
             fineness: Fineness::Fast,
+            widest: None,
             most_bytes: 1_000_000_000,
         }
     }
@@ -63,6 +66,16 @@ impl Plates {
         } else {
             bow * (1.0 - square / corner)
         }
+    }
+
+    /// Lines asked for by the widest distance.
+    fn stops(&self, axis: usize) -> Vec<f64> {
+        let [low, high] = self.bounds[0][axis];
+        let cells = self
+            .widest
+            .map_or(1, |widest| ((high - low) / widest).ceil() as usize);
+        let step = (high - low) / cells as f64;
+        (1..cells).map(|line| low + step * line as f64).collect()
     }
 
     /// Calls `with` with the problem.
@@ -115,7 +128,7 @@ impl Plates {
             bodies: covers.enumerate().map(body).collect(),
             interfaces: vec![interface; self.bounds.len() - 1],
             bolts: bolts.collect(),
-            stops: [Vec::new(), Vec::new()],
+            stops: [0, 1].map(|axis| self.stops(axis)),
             head: self.head,
             fineness: self.fineness,
             most_bytes: self.most_bytes,
