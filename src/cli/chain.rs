@@ -6,7 +6,8 @@ use crate::{
     cli::console::Trouble,
     diagnostic,
     estimate::{
-        self, BEYOND_CONE, Chain, Estimate, Failure, FieldMap, Options, RingRow, TorqueSweep,
+        self, BEYOND_CONE, Chain, Estimate, Failure, FieldMap, HeatMap, Options, RingRow,
+        StackSection, TorqueSweep,
     },
     figures::{self, Drawing, Format},
     joint::Joint,
@@ -65,19 +66,32 @@ pub fn with_rings(
     })
 }
 
-/// What the figures show: nominal results, fields over the plan, rings of every bolt.
-pub fn fields(
-    task: &Task,
-    columns: usize,
-) -> Result<(Estimate, FieldMap, Vec<Vec<RingRow>>), Trouble> {
+/// What the figures show.
+#[derive(Clone, Debug)]
+pub struct Fields {
+    /// Nominal results.
+    pub nominal: Estimate,
+    /// Pressure, gap and conductance over the plan.
+    pub map: FieldMap,
+    /// Rings of every bolt.
+    pub rings: Vec<Vec<RingRow>>,
+    /// Temperatures of the faces and the flux between them; none for the cone.
+    pub heat: Option<HeatMap>,
+    /// A cut through the stack; none for the cone.
+    pub section: Option<StackSection>,
+}
+
+/// What the figures show, maps `columns` points wide.
+pub fn fields(task: &Task, columns: usize) -> Result<Fields, Trouble> {
     let chain = task.chain()?;
     task.watched(|| {
-        let nominal = uncertainty::along(&chain, &Options { draws: 0, seed: 1 })?;
-        Ok((
-            nominal,
-            estimate::field_map(&chain, columns)?,
-            estimate::ring_tables(&chain)?,
-        ))
+        Ok(Fields {
+            nominal: uncertainty::along(&chain, &Options { draws: 0, seed: 1 })?,
+            map: estimate::field_map(&chain, columns)?,
+            rings: estimate::ring_tables(&chain)?,
+            heat: estimate::heat_map(&chain, columns)?,
+            section: estimate::stack_section(&chain)?,
+        })
     })
 }
 

@@ -6,6 +6,7 @@ mod elastic;
 mod form;
 mod geometry;
 mod levels;
+mod temperatures;
 
 pub(super) use levels::LARGE_ERROR;
 

@@ -16,22 +16,27 @@ use crate::{
 
 mod bolts;
 mod contour;
+mod faces;
 mod pair;
 mod parts;
 mod raster;
 mod shapes;
 
+pub use faces::FacePair;
+pub(super) use faces::draw as draw_faces;
 pub use pair::PlanPair;
 pub(super) use pair::draw as draw_pair;
 pub use shapes::{DetailKind, PlanBolt, PlanDetail, PlanOutline, PlanShape};
 
 /// How the values of a map meet its colours.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+#[derive(Clone, Copy, Debug, PartialEq)]
 pub enum Scale {
     /// Evenly from zero (or from the lowest value, where that is negative).
     Linear,
     /// By their logarithm, over at most three decades below the highest.
     Logarithmic,
+    /// Evenly between two values, SI, which several maps may share.
+    Between([f64; 2]),
 }
 
 /// A field over the plan.
@@ -120,7 +125,7 @@ impl PlanMap {
     /// The ground where the field has no value: tinted where paper white is a value itself.
     fn ground(&self) -> Option<Colour> {
         match self.ramp {
-            Ramp::Sea => None,
+            Ramp::Sea | Ramp::Ember => None,
             Ramp::Umber => Some(parts::TINT),
         }
     }
@@ -249,6 +254,10 @@ fn colour_axis(map: &PlanMap) -> Result<Axis, FigureError> {
         return Err(FigureError::Empty("the field"));
     }
     Ok(match map.scale {
+        Scale::Between(ends) => {
+            let [from, to] = ends.map(|end| drawable(end * map.factor, "the scale"));
+            Axis::over(from?, to?)
+        }
         Scale::Logarithmic if high > 0.0 => Axis::logarithmic(least.max(high * 1e-3), high),
         _ => Axis::over(low.min(0.0), high.max(low.min(0.0))),
     })

@@ -28,7 +28,7 @@ pub(super) fn draw(sheet: &mut Sheet, view: &View, map: &PlanMap) {
         if detail.kind == DetailKind::CutOut {
             let area = view.frame.area(&detail.shape.edge(view));
             sheet.area(area, view.ground.unwrap_or(PAPER));
-        } else if map.ramp == Ramp::Umber {
+        } else if map.ramp != Ramp::Sea {
             shape(sheet, view, &detail.shape, halo(detail_stroke(detail.kind)));
         }
         shape(sheet, view, &detail.shape, detail_stroke(detail.kind));
@@ -41,7 +41,7 @@ pub(super) fn draw(sheet: &mut Sheet, view: &View, map: &PlanMap) {
         sheet.line_within(view.frame, &points, CONTACT);
     }
     if let Some(zone) = &map.heated {
-        if map.ramp == Ramp::Umber {
+        if map.ramp != Ramp::Sea {
             shape(sheet, view, zone, halo(HEATED));
         }
         shape(sheet, view, zone, HEATED);
@@ -154,6 +154,8 @@ fn meaning(map: &PlanMap, colours: &Axis) -> Option<(Sample, String)> {
             match map.ramp {
                 Ramp::Sea => format!("no {}", map.quantity),
                 Ramp::Umber => "faces touch".into(),
+                // No temperature is nothing.
+                Ramp::Ember => return None,
             },
         ))
     } else if colours.spread == Spread::Logarithmic && map.values.iter().any(under) {

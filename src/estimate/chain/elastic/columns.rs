@@ -5,6 +5,7 @@ mod edges;
 mod heat;
 mod problem;
 mod readings;
+mod temperatures;
 
 use std::sync::{Arc, OnceLock};
 

@@ -1,0 +1,447 @@
+//! A section through the stack along a row of bolts, and what lies on it.
+
+use std::f64::consts::FRAC_1_SQRT_2;
+
+use crate::{
+    estimate::{Chain, Failure, Realisation},
+    joint::{Fastener, Joint, Plate, Zone},
+    resistance::columns::{Across, Section},
+};
+
+/// Samples along a line that find where something begins and ends; bisection does the rest.
+const SAMPLES: usize = 2000;
+
+/// The stack cut along a row of bolts, the warm plate on top.
+#[derive(Clone, Debug, PartialEq)]
+pub struct StackSection {
+    /// The line of the cut.
+    pub across: Across,
+    /// The plates, warm side first.
+    pub plates: Vec<SectionPlate>,
+    /// The bolts that the cut meets, in order along it.
+    pub bolts: Vec<SectionBolt>,
+    /// Where the cut meets the heated zone, m; none where it misses it.
+    pub heated: Option<[f64; 2]>,
+    /// Where the faces touch, m along the cut.
+    pub touching: Vec<[f64; 2]>,
+    /// Temperatures through all plates at chosen places.
+    pub through: Vec<Through>,
+}
+
+/// One plate on the section.
+#[derive(Clone, Debug, PartialEq)]
+pub struct SectionPlate {
+    /// Its name.
+    pub name: String,
+    /// What is solid, cut-outs and bolt holes left out.
+    pub solid: Vec<Solid>,
+    /// Temperatures at grid lines, per watt above the mean sink surface.
+    pub section: Section,
+}
+
+/// A part of a plate on the section.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Solid {
+    /// From where to where along the cut, m.
+    pub along: [f64; 2],
+    /// Heights above the lowest face of the stack, m.
+    pub heights: [f64; 2],
+}
+
+/// A bolt on the section.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct SectionBolt {
+    /// Its number in the joint, from 1.
+    pub number: usize,
+    /// Place of its axis along the cut, m.
+    pub along: f64,
+    /// Outer radius under its head, m.
+    pub head_radius: f64,
+    /// Radius of its widest hole, m.
+    pub hole_radius: f64,
+}
+
+/// Temperatures through all plates at one place.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Through {
+    /// What the place is: `beside bolt 1`.
+    pub name: String,
+    /// Where it is along the cut, m.
+    pub along: f64,
+    /// Height above the lowest face of the stack, m, and temperature per watt, K/W, of every
+    /// plate, warm side first, from its lower face upwards.
+    pub plates: Vec<Vec<[f64; 2]>>,
+}
+
+impl SectionPlate {
+    /// Temperature at a place of the section, K/W; none where the plate is not solid.
+    pub fn rise_at(&self, [along, height]: [f64; 2]) -> Option<f64> {
+        let holds = |[low, high]: [f64; 2], at: f64| low <= at && at <= high;
+        let solid = self
+            .solid
+            .iter()
+            .any(|part| holds(part.along, along) && holds(part.heights, height));
+        let heights = &self.section.heights;
+        let last = heights.len().checked_sub(1).filter(|_| solid)?;
+        let node = heights[1..last.max(1)].partition_point(|line| *line <= height);
+        let ends = [node, (node + 1).min(last)].map(|node| self.node_at(node, along));
+        let span = heights[(node + 1).min(last)] - heights[node];
+        let share = if span > 0.0 {
+            (height - heights[node]) / span
+        } else {
+            0.0
+        };
+        match ends {
+            [Some(below), Some(above)] => Some(below + share * (above - below)),
+            [below, above] => below.or(above),
+        }
+    }
+
+    /// Temperature of a node at a place: between the lines where both have one, else that of the
+    /// nearest that has.
+    fn node_at(&self, node: usize, along: f64) -> Option<f64> {
+        let lines = &self.section.along;
+        let right = lines.partition_point(|line| *line < along);
+        let value = |line: usize| self.section.rise.get(line)?.get(node).copied().flatten();
+        let below = (0..right).rev().find_map(|line| Some((line, value(line)?)));
+        let above = (right..lines.len()).find_map(|line| Some((line, value(line)?)));
+        let (Some((left, low)), Some((next, high))) = (below, above) else {
+            return below.or(above).map(|(_, value)| value);
+        };
+        if next == left + 1 {
+            let share = (along - lines[left]) / (lines[next] - lines[left]);
+            Some(low + share * (high - low))
+        } else if along - lines[left] < lines[next] - along {
+            Some(low)
+        } else {
+            Some(high)
+        }
+    }
+
+    /// Heights and temperatures at a place, upwards; empty where the plate is not solid.
+    fn through(&self, along: f64) -> Vec<[f64; 2]> {
+        let heights = self.section.heights.iter();
+        let points = heights.filter_map(|height| Some([*height, self.rise_at([along, *height])?]));
+        points.collect()
+    }
+}
+
+/// The section along the row of most bolts in the first case at nominal; none for the cone.
+pub fn stack_section(chain: &Chain) -> Result<Option<StackSection>, Failure> {
+    let joint = chain.joint();
+    let Some((across, bolts)) = row(joint) else {
+        return Ok(None);
+    };
+    let Some(sections) = chain.section(across)? else {
+        return Ok(None);
+    };
+    let state = chain.state(0, &Realisation::default())?;
+    let count = sections.len();
+    let plates: Vec<SectionPlate> = joint
+        .plates
+        .iter()
+        .zip(sections)
+        .enumerate()
+        .map(|(index, (plate, section))| SectionPlate {
+            name: plate.name.clone(),
+            solid: solid(joint, (index, count), (plate, &section, across)),
+            section,
+        })
+        .collect();
+    let ends = overlap(&plates);
+    let through = places(&bolts, ends)
+        .into_iter()
+        .map(|(name, along)| Through {
+            plates: plates.iter().map(|plate| plate.through(along)).collect(),
+            name,
+            along,
+        })
+        .filter(|through| through.plates.iter().all(|points| points.len() > 1))
+        .collect();
+    let range = plates
+        .iter()
+        .filter_map(|plate| Some([*plate.section.along.first()?, *plate.section.along.last()?]))
+        .next();
+    Ok(range.map(|range| StackSection {
+        touching: chords(range, |along| {
+            let met = chain.met_at(point(across, along), &state);
+            met.is_some_and(|met| met.pressure > 0.0)
+        }),
+        heated: heated(joint.source.zone, (across, range)),
+        across,
+        plates,
+        bolts,
+        through,
+    }))
+}
+
+/// A point on the line, in joint coordinates.
+fn point(across: Across, along: f64) -> [f64; 2] {
+    match across {
+        Across::X(y) => [along, y],
+        Across::Y(x) => [x, along],
+    }
+}
+
+/// The line that meets most bolts, and these in order; of equal ones along x, the first in the file.
+fn row(joint: &Joint) -> Option<(Across, Vec<SectionBolt>)> {
+    let bolts: Vec<(&Fastener, [f64; 2])> = joint.bolts().collect();
+    let met = |[along, off]: [usize; 2], line: f64| -> Vec<SectionBolt> {
+        let mut met: Vec<SectionBolt> = bolts
+            .iter()
+            .enumerate()
+            .filter_map(|(index, (fastener, at))| {
+                let hole = widest(fastener);
+                // Nearer to the axis than half way to the wall.
+                ((at[off] - line).abs() < 0.5 * hole).then_some(SectionBolt {
+                    number: index + 1,
+                    along: at[along],
+                    head_radius: fastener.head_seat.outer_radius,
+                    hole_radius: hole,
+                })
+            })
+            .collect();
+        met.sort_by(|one, other| one.along.total_cmp(&other.along));
+        met
+    };
+    let lines = bolts.iter().flat_map(|(_, [x, y])| {
+        [
+            (Across::X(*y), met([0, 1], *y)),
+            (Across::Y(*x), met([1, 0], *x)),
+        ]
+    });
+    let mut best: Option<(Across, Vec<SectionBolt>)> = None;
+    for (across, met) in lines {
+        if best.as_ref().is_none_or(|(_, most)| met.len() > most.len()) {
+            best = Some((across, met));
+        }
+    }
+    best
+}
+
+fn widest(fastener: &Fastener) -> f64 {
+    fastener.hole_radius.iter().copied().fold(0.0, f64::max)
+}
+
+/// What is solid of a plate: itself, its feet towards the other, its ribs away from it.
+fn solid(
+    joint: &Joint,
+    (index, count): (usize, usize),
+    (plate, section, across): (&Plate, &Section, Across),
+) -> Vec<Solid> {
+    let (Some(&foot), Some(&top)) = (section.heights.first(), section.heights.last()) else {
+        return Vec::new();
+    };
+    let (Some(&from), Some(&to)) = (section.along.first(), section.along.last()) else {
+        return Vec::new();
+    };
+    let own = |along: f64| plate.own(point(across, along));
+    let open = |along: f64| {
+        let at = point(across, along);
+        joint.bolts().any(|(fastener, [x, y])| {
+            let holes = &fastener.hole_radius;
+            let hole = holes.get(index).or(holes.last()).copied().unwrap_or(0.0);
+            (at[0] - x).hypot(at[1] - y) < hole
+        })
+    };
+    let mut found = Vec::new();
+    let mut part = |heights: [f64; 2], inside: &dyn Fn(f64) -> bool| {
+        let covered = |along: f64| {
+            plate.covers(point(across, along)) && inside(along) && !open(along)
+        };
+        let spans = chords([from, to], covered);
+        found.extend(spans.into_iter().map(|along| Solid { along, heights }));
+    };
+    let feet = plate.feet.as_ref().map_or(0.0, |feet| feet.height);
+    // The last plate faces upwards, all others down.
+    let faces_down = index + 1 < count;
+    let main = if faces_down {
+        [foot + feet, foot + feet + plate.thickness]
+    } else {
+        [top - feet - plate.thickness, top - feet]
+    };
+    part(main, &|_| true);
+    if let Some(feet) = &plate.feet {
+        let heights = if faces_down {
+            [foot, main[0]]
+        } else {
+            [main[1], top]
+        };
+        part(heights, &|along| {
+            feet.at.iter().any(|foot| foot.contains(own(along)))
+        });
+    }
+    for rib in &plate.ribs {
+        let heights = if faces_down {
+            [main[1], main[1] + rib.height]
+        } else {
+            [main[0] - rib.height, main[0]]
+        };
+        part(heights, &|along| rib.patch.contains(own(along)));
+    }
+    found
+}
+
+/// Where something holds on a line, to a millionth of its length.
+fn chords([from, to]: [f64; 2], inside: impl Fn(f64) -> bool) -> Vec<[f64; 2]> {
+    let step = (to - from) / SAMPLES as f64;
+    let edge = |mut outside: f64, mut within: f64| {
+        for _ in 0..20 {
+            let middle = f64::midpoint(outside, within);
+            if inside(middle) {
+                within = middle;
+            } else {
+                outside = middle;
+            }
+        }
+        within
+    };
+    let mut chords: Vec<[f64; 2]> = Vec::new();
+    let mut before: Option<f64> = None;
+    // Samples stand in the middle of their steps, so that none falls on an edge of the plan.
+    let samples = (0..SAMPLES).map(|sample| from + (sample as f64 + 0.5) * step);
+    for at in samples {
+        match (before, inside(at)) {
+            (None, true) => {
+                let start = if at - step < from && inside(from) {
+                    from
+                } else {
+                    edge((at - step).max(from), at)
+                };
+                chords.push([start, at]);
+                before = Some(at);
+            }
+            (Some(last), false) => {
+                if let Some(chord) = chords.last_mut() {
+                    chord[1] = edge(at, last);
+                }
+                before = None;
+            }
+            (Some(_), true) => before = Some(at),
+            (None, false) => {}
+        }
+    }
+    if let (Some(last), Some(chord)) = (before, chords.last_mut()) {
+        chord[1] = if inside(to) { to } else { edge(to, last) };
+    }
+    chords
+}
+
+/// The part of the line where every plate is, holes bridged, m.
+fn overlap(plates: &[SectionPlate]) -> [f64; 2] {
+    let mut ends = [f64::NEG_INFINITY, f64::INFINITY];
+    for plate in plates {
+        let parts = plate.solid.iter().map(|part| part.along);
+        let [from, to] = parts.fold([f64::INFINITY, f64::NEG_INFINITY], |ends, part| {
+            [ends[0].min(part[0]), ends[1].max(part[1])]
+        });
+        ends = [ends[0].max(from), ends[1].min(to)];
+    }
+    ends
+}
+
+/// Places worth a profile: beside a bolt, and half way to its neighbour; beside a lone bolt half
+/// way from its head to the farther edge.
+fn places(bolts: &[SectionBolt], [from, to]: [f64; 2]) -> Vec<(String, f64)> {
+    let beside = |bolt: &SectionBolt, towards: f64| {
+        let reach = FRAC_1_SQRT_2 * bolt.hole_radius.hypot(bolt.head_radius);
+        let side = (towards - bolt.along).signum();
+        (format!("beside bolt {}", bolt.number), bolt.along + side * reach)
+    };
+    let middle = f64::midpoint(from, to);
+    let pair = bolts
+        .windows(2)
+        .map(|pair| (pair, f64::midpoint(pair[0].along, pair[1].along)))
+        .min_by(|(_, one), (_, other)| (one - middle).abs().total_cmp(&(other - middle).abs()));
+    if let Some((pair, half_way)) = pair {
+        let name = format!("between bolts {} and {}", pair[0].number, pair[1].number);
+        return vec![beside(&pair[0], half_way), (name, half_way)];
+    }
+    let Some(bolt) = bolts.first() else {
+        return Vec::new();
+    };
+    let [towards, side] = if to - bolt.along >= bolt.along - from {
+        [to, 1.0]
+    } else {
+        [from, -1.0]
+    };
+    let away = f64::midpoint(bolt.along + side * bolt.head_radius, towards);
+    vec![beside(bolt, towards), ("away from the bolt".to_owned(), away)]
+}
+
+/// Where a line meets the heated zone.
+fn heated(zone: Zone, (across, [from, to]): (Across, [f64; 2])) -> Option<[f64; 2]> {
+    let inside = |along: f64| {
+        let [x, y] = point(across, along);
+        match zone {
+            Zone::Face => true,
+            Zone::Rectangle { centre, size } => {
+                (x - centre[0]).abs() <= 0.5 * size[0] && (y - centre[1]).abs() <= 0.5 * size[1]
+            }
+            Zone::Disc { centre, radius } => (x - centre[0]).hypot(y - centre[1]) <= radius,
+        }
+    };
+    match zone {
+        Zone::Face => None,
+        _ => chords([from, to], inside).first().copied(),
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn chords_find_edges_and_the_ends_of_the_line() {
+        let found = chords([0.0, 1.0], |at| at < 0.25 || (0.5..=0.75).contains(&at) || at > 0.9);
+        let known = [[0.0, 0.25], [0.5, 0.75], [0.9, 1.0]];
+        assert_eq!(found.len(), known.len());
+        for (one, other) in found.iter().flatten().zip(known.iter().flatten()) {
+            // Twenty halvings of a step of 1/2000 of the line.
+            assert!((one - other).abs() < 1e-9, "{found:?}");
+        }
+    }
+
+    #[test]
+    fn a_place_between_bolts_lies_half_way_and_one_beside_them_under_the_head() {
+        let bolt = |number: usize, along: f64| SectionBolt {
+            number,
+            along,
+            head_radius: 4.0,
+            hole_radius: 2.0,
+        };
+        let found = places(&[bolt(1, 10.0), bolt(4, 50.0), bolt(2, 100.0)], [0.0, 100.0]);
+        assert_eq!(found[0].0, "beside bolt 1");
+        assert!((12.0..=14.0).contains(&found[0].1));
+        assert_eq!(found[1], ("between bolts 1 and 4".to_owned(), 30.0));
+        let lone = places(&[bolt(1, 70.0)], [0.0, 100.0]);
+        assert_eq!(lone[1], ("away from the bolt".to_owned(), 33.0));
+    }
+
+    #[test]
+    fn a_plate_takes_the_nearest_temperature_beside_a_hole() {
+        let plate = SectionPlate {
+            name: String::new(),
+            solid: vec![Solid {
+                along: [0.0, 4.0],
+                heights: [0.0, 1.0],
+            }],
+            section: Section {
+                along: vec![0.0, 1.0, 2.0, 3.0, 4.0],
+                heights: vec![0.0, 1.0],
+                rise: vec![
+                    vec![Some(0.0), Some(2.0)],
+                    vec![Some(1.0), Some(3.0)],
+                    vec![None, None],
+                    vec![Some(9.0), Some(11.0)],
+                    vec![Some(9.0), Some(11.0)],
+                ],
+            },
+        };
+        assert_eq!(plate.rise_at([0.5, 0.5]), Some(1.5));
+        assert_eq!(plate.rise_at([1.5, 0.5]), Some(2.0));
+        assert_eq!(plate.rise_at([2.5, 0.5]), Some(10.0));
+        assert_eq!(plate.rise_at([5.0, 0.5]), None);
+        assert_eq!(plate.through(0.0), [[0.0, 0.0], [1.0, 2.0]]);
+    }
+}
