@@ -232,6 +232,7 @@ fn case_result(chain: &Chain, case: usize, numerical_error: f64) -> Result<CaseR
             interface_drop: Band::nominal(heat * path.interface_drop),
             coolant_drop: path.coolant_drop.map(|drop| heat * drop),
         }),
+        temperatures: chain.temperatures(case)?,
         requirement: None,
         drivers: Vec::new(),
     })

@@ -20,6 +20,7 @@ mod geometry;
 mod lands;
 mod maps;
 mod materials;
+mod medium;
 mod overrides;
 mod patches;
 mod patterns;

@@ -147,6 +147,7 @@ fn sweep() -> TorqueSweep {
         stated: 2.2,
         largest: Some((2.9, "yield of the bolt")),
         best: Some(2.8),
+        minimum: None,
         points: (1..=16)
             .map(|k| {
                 let torque = f64::from(k) / 4.0;

@@ -637,6 +637,7 @@ fn torque_sweep() -> TorqueSweep {
         stated: 1.7,
         largest: Some((2.04, "yield of the bolt")),
         best: Some(1.0),
+        minimum: None,
         points: vec![point(1.0, 0.1), point(1.6, 0.11), point(2.2, 0.12)],
         required: Some((0.115, Limit::Most)),
         cautions: Vec::new(),

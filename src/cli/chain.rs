@@ -10,9 +10,9 @@ use crate::{
         StackSection, TorqueSweep,
     },
     figures::{self, Drawing, Format},
-    joint::Joint,
+    joint::{Joint, Medium},
     pressure::elastic::Failure as Contact,
-    uncertainty::{self, SweepOptions},
+    uncertainty::{self, InMedium, SweepOptions},
     units::{self, Quantity},
 };
 
@@ -42,28 +42,61 @@ impl<'a> Task<'a> {
     }
 }
 
-/// Low, nominal and high of a joint.
-pub fn estimate(task: &Task, options: &Options) -> Result<Estimate, Trouble> {
-    let chain = task.chain()?;
-    task.watched(|| uncertainty::along(&chain, options))
-}
-
 /// The torque of one group swept.
 pub fn torque_sweep(task: &Task, options: &SweepOptions) -> Result<TorqueSweep, Trouble> {
     let chain = task.chain()?;
     task.watched(|| uncertainty::sweep_along(&chain, options))
 }
 
-/// An estimate with the rings of every bolt.
-pub fn with_rings(
+/// Whether the rings of every bolt are asked for.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Rings {
+    /// They are.
+    Told,
+    /// They are not.
+    Left,
+}
+
+/// An estimate and what was asked for beside it.
+#[derive(Clone, Debug)]
+pub struct Estimated {
+    /// Low, nominal and high.
+    pub estimate: Estimate,
+    /// Rings of every bolt; empty unless asked for.
+    pub rings: Vec<Vec<RingRow>>,
+    /// The same joint in other media; empty unless asked for.
+    pub media: Vec<InMedium>,
+}
+
+/// Low, nominal and high of a joint, with rings and media as asked for.
+pub fn estimate(
     task: &Task,
     options: &Options,
-) -> Result<(Estimate, Vec<Vec<RingRow>>), Trouble> {
+    (rings, media): (Rings, &[Medium]),
+) -> Result<Estimated, Trouble> {
     let chain = task.chain()?;
     task.watched(|| {
-        let found = uncertainty::along(&chain, options)?;
-        Ok((found, estimate::ring_tables(&chain)?))
+        Ok(Estimated {
+            estimate: uncertainty::along(&chain, options)?,
+            rings: match rings {
+                Rings::Told => estimate::ring_tables(&chain)?,
+                Rings::Left => Vec::new(),
+            },
+            media: uncertainty::in_media(&chain, media, options)?,
+        })
     })
+}
+
+/// The word of a medium from the command line, if a joint file would take it.
+pub fn medium(word: &str) -> Result<String, String> {
+    Medium::named(word, None).map(|medium| medium.word())
+}
+
+/// Media by their words, gases at the pressure of the joint's own gas where it has one.
+pub fn media(joint: &Joint, words: &[String]) -> Vec<Medium> {
+    let pressure = joint.service.medium.pressure();
+    let named = words.iter().map(|word| Medium::named(word, pressure));
+    named.filter_map(Result::ok).collect()
 }
 
 /// What the figures show.

@@ -13,6 +13,8 @@ pub struct Temperatures {
     pub hottest: f64,
     /// Where it is: x and y in the first plate's own coordinates, height above its lowest face, m.
     pub hottest_at: [f64; 3],
+    /// Names of the plates, warm side first.
+    pub names: Vec<String>,
     /// Volume mean of every plate, warm side first.
     pub plate_means: Vec<f64>,
     /// Area mean of the drop across every interface, warm side first.

@@ -35,6 +35,8 @@ pub enum Scale {
     Linear,
     /// By their logarithm, over at most three decades below the highest.
     Logarithmic,
+    /// By their logarithm, over at most two decades below the highest.
+    TwoDecades,
     /// Evenly between two values, SI, which several maps may share.
     Between([f64; 2]),
 }
@@ -259,6 +261,7 @@ fn colour_axis(map: &PlanMap) -> Result<Axis, FigureError> {
             Axis::over(from?, to?)
         }
         Scale::Logarithmic if high > 0.0 => Axis::logarithmic(least.max(high * 1e-3), high),
+        Scale::TwoDecades if high > 0.0 => Axis::logarithmic(least.max(high * 1e-2), high),
         _ => Axis::over(low.min(0.0), high.max(low.min(0.0))),
     })
 }

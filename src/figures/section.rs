@@ -38,6 +38,8 @@ const BESIDE: f64 = 150.0;
 /// Height at which the stack is drawn at least, and at most, points.
 const LEAST: f64 = 130.0;
 const MOST: f64 = 300.0;
+/// Share of the range of temperatures that is rounding.
+const ROUNDING: f64 = 1e-5;
 /// Height of the bar, points.
 const BAR: f64 = 9.0;
 /// Height from the top of the panels to the cut: name, bar, its labels, numbers of the bolts.
@@ -46,9 +48,9 @@ const OVER: f64 = 18.0 + BAR + 30.0 + 22.0;
 /// The cut on the sheet.
 struct View {
     frame: Frame,
-    /// From where to where along the cut, and the height of the stack, m.
+    /// From where to where along the cut and in height, m.
     along: [f64; 2],
-    height: f64,
+    heights: [f64; 2],
     /// Temperatures on colours, shown unit.
     colours: Axis,
     /// Shown temperature over that per watt.
@@ -62,29 +64,36 @@ impl View {
     }
 
     fn y(&self, height: f64) -> f64 {
-        self.frame.bottom - height / self.height * self.frame.height()
+        let share = (height - self.heights[0]) / (self.heights[1] - self.heights[0]);
+        self.frame.bottom - share * self.frame.height()
     }
 }
 
 /// Draws the cut.
 pub(super) fn draw(plot: &SectionPlot) -> Result<Sheet, FigureError> {
     let section = &plot.section;
-    let [along, height] = extent(section)?;
+    let [along, heights] = extent(section)?;
     let factor = plot.heat.unwrap_or(1.0);
     let [low, high] = warmth(section)?;
     let colours = Axis::over(
         drawable(low * factor, "the temperatures")?,
         drawable(high * factor, "the temperatures")?,
     );
-    let (width, tall, stretch) = scaled(along, height[1]);
+    let (width, tall, stretch) = scaled(along, heights[1] - heights[0]);
 
-    let heights = Axis::over(0.0, height[1] * 1e3);
-    let left = MARGIN + axis::side_room(&heights, tall);
+    let upright = Axis::over(heights[0] * 1e3, heights[1] * 1e3);
+    let left = MARGIN + axis::side_room(&upright, tall);
     let places = Axis::over(along[0] * 1e3, along[1] * 1e3);
     let beside = left + width + 0.5 * places.label_width(10).max(24.0) + 22.0;
     let mut sheet = Sheet::new(beside + BESIDE + MARGIN + 12.0);
+    let names: Vec<&str> = section
+        .plates
+        .iter()
+        .map(|plate| plate.name.as_str())
+        .collect();
     let range = format!(
-        "{}, {} to {} {}",
+        "{}; {}, {} to {} {}",
+        names.join(" on "),
         told(plot.heat),
         significant(low * factor, 3),
         significant(high * factor, 3),
@@ -99,20 +108,20 @@ pub(super) fn draw(plot: &SectionPlot) -> Result<Sheet, FigureError> {
             bottom: top + tall,
         },
         along,
-        height: height[1],
+        heights,
         colours,
         factor,
     };
     bar(&mut sheet, &view, plot.heat);
     cut::draw(&mut sheet, &view, section);
-    axis::left(&mut sheet, view.frame, (&heights, "height, mm"), Grid::Without);
+    axis::left(&mut sheet, view.frame, (&upright, "height, mm"), Grid::Without);
     let (name, other, line) = match section.across {
         Across::X(y) => ("x", "y", y),
         Across::Y(x) => ("y", "x", x),
     };
     let mut title = format!("{name}, mm, at {other} = {} mm", axis::plain(line * 1e3));
     if stretch > 1.0 {
-        title += &format!("; heights {} ×", axis::plain(stretch));
+        title += &format!("; heights drawn {} ×", axis::plain(stretch));
     }
     axis::bottom(&mut sheet, view.frame, (&places, Some(&title)));
     let panel = Frame {
@@ -141,7 +150,7 @@ fn bar(sheet: &mut Sheet, view: &View, heat: Option<f64>) {
         ..view.frame
     };
     let lettering = Lettering::plain(LABEL, INK, Anchor::Start);
-    let name = format!("temperature above the mean sink surface, {}", unit(heat));
+    let name = format!("temperature, {}", unit(heat));
     let name = lettering.shortened(&name, bar.width().max(150.0));
     sheet.text([bar.left, top - 0.55 * TICK], name, lettering);
     sheet.pictures.push(Picture::level_bar(bar, Ramp::Ember));
@@ -165,7 +174,7 @@ fn extent(section: &StackSection) -> Result<[[f64; 2]; 2], FigureError> {
         drawable(*end, "the section")?;
     }
     let [wide, tall] = ends.map(|[from, to]| to - from);
-    let sound = wide > 1e-12 && ends[1][1] > 1e-12 && tall < 1e3 * wide && wide < 1e6 * tall;
+    let sound = wide > 1e-12 && tall > 1e-12 && tall < 1e3 * wide && wide < 1e6 * tall;
     if sound {
         Ok(ends)
     } else {
@@ -188,7 +197,9 @@ fn warmth(section: &StackSection) -> Result<[f64; 2], FigureError> {
     if low > high {
         return Err(FigureError::Empty("the temperatures"));
     }
-    Ok([low, high])
+    // A held sink is at zero but for rounding.
+    let rounding = ROUNDING * (high - low);
+    Ok([low, high].map(|end| if end.abs() < rounding { 0.0 } else { end }))
 }
 
 /// Width and height of the cut, points, and how much more the heights are drawn than the lengths.

@@ -138,6 +138,7 @@ fn sweep(stated: f64, largest: f64, required: f64, size: f64) -> TorqueSweep {
         stated,
         largest: Some((largest, "pressure under the head")),
         best: Some(3.0),
+        minimum: None,
         points: (1..=20)
             .map(|k| {
                 let torque = f64::from(k) / 5.0;

@@ -45,6 +45,7 @@ pub(super) fn draw(sweep: &TorqueSweep) -> Result<Sheet, FigureError> {
         Some(torque) => Some(drawable(torque, "the best torque")?),
         None => None,
     };
+    let minimum = minimum(sweep)?;
     let torques = || upper_points.iter().map(|p| p.torque).chain([stated]);
     let x_axis = Axis::over(
         torques().fold(f64::INFINITY, f64::min),
@@ -142,7 +143,13 @@ pub(super) fn draw(sweep: &TorqueSweep) -> Result<Sheet, FigureError> {
         (upper, &upper_axis, &upper_points),
         (lower, &lower_axis, &lower_points),
     ] {
-        let line: Vec<[f64; 2]> = points
+        let mut shown: Vec<Point> = points.clone();
+        if frame == upper {
+            // The curve passes through its minimum, which lies between two swept torques.
+            shown.extend(minimum);
+            shown.sort_by(|one, other| one.torque.total_cmp(&other.torque));
+        }
+        let line: Vec<[f64; 2]> = shown
             .iter()
             .map(|p| at(frame, axis, *p, p.nominal))
             .collect();
@@ -152,7 +159,9 @@ pub(super) fn draw(sweep: &TorqueSweep) -> Result<Sheet, FigureError> {
         }
     }
     if let Some(best) = best
-        && let Some(value) = between(&upper_points, best)
+        && let Some(value) = minimum
+            .map(|point| point.nominal)
+            .or_else(|| between(&upper_points, best))
     {
         let place = [
             across(best),
@@ -175,6 +184,20 @@ pub(super) fn draw(sweep: &TorqueSweep) -> Result<Sheet, FigureError> {
         &key(sweep, barred.is_some_and(|b| b < right)),
     ) + 12.0;
     Ok(sheet)
+}
+
+/// The minimum between the swept torques, without a band.
+fn minimum(sweep: &TorqueSweep) -> Result<Option<Point>, FigureError> {
+    let Some(found) = sweep.minimum else {
+        return Ok(None);
+    };
+    let value = drawable(found.source_to_sink, "the minimum")?;
+    Ok(Some(Point {
+        torque: drawable(found.torque, "the minimum")?,
+        low: value,
+        nominal: value,
+        high: value,
+    }))
 }
 
 fn nominal() -> Stroke {
@@ -342,6 +365,16 @@ fn between(points: &[Point], torque: f64) -> Option<f64> {
     Some(pair[0].nominal + t * (pair[1].nominal - pair[0].nominal))
 }
 
+fn best_name(sweep: &TorqueSweep) -> &'static str {
+    if sweep.resists() {
+        "highest that strength allows"
+    } else if sweep.minimum.is_some() {
+        "minimum"
+    } else {
+        "lowest that strength allows"
+    }
+}
+
 fn key(sweep: &TorqueSweep, barred: bool) -> Vec<(Sample, String)> {
     let banded = sweep.points.iter().any(|p| p.source_to_sink.high.is_some());
     let mut items = vec![if banded {
@@ -355,10 +388,7 @@ fn key(sweep: &TorqueSweep, barred: bool) -> Vec<(Sample, String)> {
     if let Some(best) = sweep.best {
         items.push((
             Sample::HollowDot(nominal().colour),
-            format!(
-                "lowest that strength allows, at {} N\u{a0}m",
-                axis::plain(best)
-            ),
+            format!("{}, at {} N\u{a0}m", best_name(sweep), axis::plain(best)),
         ));
     }
     if barred {

@@ -17,7 +17,7 @@ use crate::{
 const ROOM: f64 = 293.15;
 
 /// Standard atmosphere, Pa.
-const ATMOSPHERE: f64 = 101_325.0;
+pub(super) const ATMOSPHERE: f64 = 101_325.0;
 
 /// Reads `[service]`. `sink` is the table `cooled` of the second plate, which may state the
 /// temperature in its place.

@@ -14,6 +14,7 @@ impl Chain<'_> {
         let solved = self.solved(case)?;
         Ok(solved.map(|solved| {
             let mut found = solved.temperatures();
+            found.names = self.joint().plates.iter().map(|p| p.name.clone()).collect();
             let [x, y, _] = &mut found.hottest_at;
             [*x, *y] = self.joint().warm().own([*x, *y]);
             found

@@ -1,7 +1,5 @@
 //! A section through the stack along a row of bolts, and what lies on it.
 
-use std::f64::consts::FRAC_1_SQRT_2;
-
 use crate::{
     estimate::{Chain, Failure, Realisation},
     joint::{Fastener, Joint, Plate, Zone},
@@ -10,6 +8,8 @@ use crate::{
 
 /// Samples along a line that find where something begins and ends; bisection does the rest.
 const SAMPLES: usize = 2000;
+/// Most nodes through a plate that is one element: its polynomial passes through them.
+const ONE_ELEMENT: usize = 4;
 
 /// The stack cut along a row of bolts, the warm plate on top.
 #[derive(Clone, Debug, PartialEq)]
@@ -122,8 +122,36 @@ impl SectionPlate {
     fn through(&self, along: f64) -> Vec<[f64; 2]> {
         let heights = self.section.heights.iter();
         let points = heights.filter_map(|height| Some([*height, self.rise_at([along, *height])?]));
-        points.collect()
+        let nodes: Vec<[f64; 2]> = points.collect();
+        if nodes.len() == self.section.heights.len() && nodes.len() <= ONE_ELEMENT {
+            curve(&nodes)
+        } else {
+            nodes
+        }
     }
+}
+
+/// The polynomial through the nodes of one element, as points.
+fn curve(nodes: &[[f64; 2]]) -> Vec<[f64; 2]> {
+    const PARTS: usize = 24;
+    let (Some(first), Some(last)) = (nodes.first(), nodes.last()) else {
+        return Vec::new();
+    };
+    let at = |height: f64| -> f64 {
+        let terms = nodes.iter().enumerate().map(|(index, [own, value])| {
+            let others = nodes.iter().enumerate().filter(|(other, _)| *other != index);
+            let shape = others.map(|(_, [node, _])| (height - node) / (own - node));
+            value * shape.product::<f64>()
+        });
+        terms.sum()
+    };
+    (0..=PARTS)
+        .map(|part| {
+            let share = part as f64 / PARTS as f64;
+            let height = first[0] + share * (last[0] - first[0]);
+            [height, at(height)]
+        })
+        .collect()
 }
 
 /// The section along the row of most bolts in the first case at nominal; none for the cone.
@@ -344,7 +372,8 @@ fn overlap(plates: &[SectionPlate]) -> [f64; 2] {
 /// way from its head to the farther edge.
 fn places(bolts: &[SectionBolt], [from, to]: [f64; 2]) -> Vec<(String, f64)> {
     let beside = |bolt: &SectionBolt, towards: f64| {
-        let reach = FRAC_1_SQRT_2 * bolt.hole_radius.hypot(bolt.head_radius);
+        // Clear of the wall of the hole, and still under the head.
+        let reach = 0.25 * bolt.hole_radius + 0.75 * bolt.head_radius;
         let side = (towards - bolt.along).signum();
         (format!("beside bolt {}", bolt.number), bolt.along + side * reach)
     };
@@ -442,6 +471,8 @@ mod tests {
         assert_eq!(plate.rise_at([1.5, 0.5]), Some(2.0));
         assert_eq!(plate.rise_at([2.5, 0.5]), Some(10.0));
         assert_eq!(plate.rise_at([5.0, 0.5]), None);
-        assert_eq!(plate.through(0.0), [[0.0, 0.0], [1.0, 2.0]]);
+        let through = plate.through(0.0);
+        assert_eq!(through.first(), Some(&[0.0, 0.0]));
+        assert_eq!(through.last(), Some(&[1.0, 2.0]));
     }
 }

@@ -79,7 +79,7 @@ impl PlanMap {
             quantity: "heat flux across the faces".into(),
             unit: "× its mean".into(),
             factor: 1.0,
-            scale: Scale::Logarithmic,
+            scale: Scale::TwoDecades,
             ..Self::pressure(title, field)
         }
     }

@@ -31,7 +31,6 @@ pub(super) fn draw(sheet: &mut Sheet, view: &View, section: &StackSection) {
         let corners = [[left, top], [right, top], [right, bottom], [left, bottom]];
         sheet.closed_within(around(view, 1.0), &corners, EDGE);
     }
-    faces(sheet, view, section);
     if let Some([from, to]) = section.heated {
         let y = view.frame.top - 3.0;
         sheet.line(&[[view.x(from), y], [view.x(to), y]], HEATED);
@@ -48,6 +47,7 @@ pub(super) fn draw(sheet: &mut Sheet, view: &View, section: &StackSection) {
         sheet.line(&ends.map(|y| [x, y]), halo);
         sheet.line(&ends.map(|y| [x, y]), stroke);
     }
+    faces(sheet, view, section);
     bolts(sheet, view, section);
 }
 
@@ -125,7 +125,8 @@ fn picture(view: &View, section: &StackSection) -> Picture {
         .map(|length| ((length * FINENESS).round() as usize).max(1));
     let mut indices = Vec::with_capacity(size[0] * size[1]);
     for row in 0..size[1] {
-        let height = view.height * (1.0 - (row as f64 + 0.5) / size[1] as f64);
+        let [low, high] = view.heights;
+        let height = high - (high - low) * (row as f64 + 0.5) / size[1] as f64;
         for column in 0..size[0] {
             let share = (column as f64 + 0.5) / size[0] as f64;
             let along = view.along[0] + share * (view.along[1] - view.along[0]);

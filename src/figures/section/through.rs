@@ -6,7 +6,7 @@ use crate::figures::{
     clip::Frame,
     drawable,
     legend::Sample,
-    section::{SectionPlot, View, place_stroke},
+    section::{ROUNDING, SectionPlot, View, place_stroke},
     sheet::{FAINT, GREY, INK, NARROW, Sheet, Stroke},
     warmth::unit,
 };
@@ -33,14 +33,15 @@ pub(super) fn draw(
     if low > high {
         return Ok(Vec::new());
     }
+    if low.abs() < ROUNDING * (high - low) {
+        low = 0.0;
+    }
     let axis = Axis::around(low, high);
     for plate in &section.plates {
         for height in [plate.section.heights.first(), plate.section.heights.last()] {
             let y = view.y(height.copied().unwrap_or(0.0));
-            sheet.line(
-                &[[panel.left, y], [panel.right, y]],
-                Stroke::solid(0.8, FAINT),
-            );
+            let line = [[panel.left, y], [panel.right, y]];
+            sheet.line_within(panel, &line, Stroke::solid(0.8, FAINT));
         }
     }
     sheet.line(

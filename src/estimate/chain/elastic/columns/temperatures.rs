@@ -14,6 +14,8 @@ pub(super) fn at_a_glance(heat: &Heat) -> Temperatures {
     Temperatures {
         hottest: heat.hottest.rise,
         hottest_at: heat.hottest.at,
+        // The chain knows them.
+        names: Vec::new(),
         plate_means: heat.body_means.clone(),
         interface_drops: heat.interface_drops.clone(),
     }

@@ -18,6 +18,8 @@ pub(super) fn at_a_glance(heat: &Heat, shape: &Shape) -> Temperatures {
             shape.at[1],
             heat.hottest_at.height,
         ],
+        // The chain knows them.
+        names: Vec::new(),
         plate_means: heat.plate_mean.to_vec(),
         interface_drops: vec![heat.path.interface_drop],
     }
