@@ -3,7 +3,7 @@
 use crate::{
     joint::Medium,
     report::{
-        number::{band, four, optional, wrapped},
+        number::{band, optional, wrapped},
         table::{Side, aligned},
         text::WIDTH,
     },
@@ -68,15 +68,14 @@ fn sentence(gas: &Medium, ratio: f64) -> String {
     let word = gas.word();
     if ratio >= ALIKE {
         format!(
-            "a test in {word} reads {} times better than vacuum: what the joint adds",
-            four(ratio)
+            "a test in {word} reads {ratio:.1} times better than vacuum: in vacuum the joint adds that much more"
         )
     } else if ratio > 1.0 / ALIKE {
         format!("a test in {word} reads like vacuum: the joint adds the same within 5 %")
     } else {
         format!(
-            "a test in {word} reads {} times worse than vacuum: what the joint adds",
-            four(1.0 / ratio)
+            "a test in {word} reads {:.1} times worse than vacuum: in vacuum the joint adds that much less",
+            ratio.recip()
         )
     }
 }

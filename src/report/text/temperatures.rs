@@ -7,15 +7,16 @@ use crate::{
         text::WIDTH,
     },
 };
+use std::fmt::Write;
 
 /// Temperatures of a solved heat in words; empty for the cone.
 pub(super) fn told(estimate: &Estimate, case: &CaseResult) -> String {
     let Some(found) = &case.temperatures else {
         return String::new();
     };
-    let (factor, unit, at) = match estimate.heat {
-        Some(heat) => (heat, "K", format!("at {} W", four(heat))),
-        None => (1.0, "K/W", "per watt".to_owned()),
+    let (factor, unit) = match estimate.heat {
+        Some(heat) => (heat, "K"),
+        None => (1.0, "K/W"),
     };
     let shown = |per_watt: f64| format!("{} {unit}", four(factor * per_watt));
     let means: Vec<String> = found
@@ -24,14 +25,16 @@ pub(super) fn told(estimate: &Estimate, case: &CaseResult) -> String {
         .zip(&found.plate_means)
         .map(|(name, mean)| format!("{} {}", plain(name), shown(*mean)))
         .collect();
-    let drops: Vec<String> = found.interface_drops.iter().map(|d| shown(*d)).collect();
-    let line = format!(
-        "above the sink surface {at}: hottest {} {}; means of the plates {}; mean drop across the faces {}",
-        shown(found.hottest),
-        place(found),
-        means.join(", "),
-        drops.join(", "),
-    );
+    let mut line = format!("hottest point {}", place(found));
+    // With the heat the line of the rise tells how hot, and the drop of all faces together.
+    if estimate.heat.is_none() {
+        let _ = write!(line, ": {} above the sink surface", shown(found.hottest));
+    }
+    let _ = write!(line, "; means above the sink surface: {}", means.join(", "));
+    if estimate.heat.is_none() || found.interface_drops.len() > 1 {
+        let drops: Vec<String> = found.interface_drops.iter().map(|d| shown(*d)).collect();
+        let _ = write!(line, "; across the faces {}", drops.join(", "));
+    }
     wrapped(&line, WIDTH, 2) + "\n"
 }
 
