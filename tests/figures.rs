@@ -157,7 +157,9 @@ fn section(heat: Option<f64>) -> SectionPlot {
                 .iter()
                 .map(|along| {
                     let near = holes.iter().any(|hole| (hole - along).abs() < 2e-3);
-                    [0.0, 0.01, 0.02].map(|more| (!near).then_some(rise + more)).to_vec()
+                    [0.0, 0.01, 0.02]
+                        .map(|more| (!near).then_some(rise + more))
+                        .to_vec()
                 })
                 .collect(),
         },
@@ -188,7 +190,7 @@ fn section(heat: Option<f64>) -> SectionPlot {
             heated: Some([0.02, 0.04]),
             touching: vec![[0.01, 0.0128], [0.0172, 0.02]],
             through: vec![
-                through("beside bolt 1", 0.018, 0.01),
+                through("beside bolt 1", 0.018, 0.012),
                 through("between bolts 1 and 2", 0.03, 0.15),
             ],
         },
@@ -454,8 +456,8 @@ fn a_section_shows_colours_bolts_contact_and_the_jump_at_two_places() {
         "faces touch",
         "heated zone",
         "axis of a bolt",
-        // The fixture jumps by 0.01 and 0.15 K/W.
-        "beside bolt 1: 0.100 K across the faces",
+        // The fixture jumps by 0.012 and 0.15 K/W.
+        "beside bolt 1: 0.120 K across the faces",
         "between bolts 1 and 2: 1.50 K across the faces",
     ] {
         assert!(holds(&found, part), "{part} is missing in {found:?}");
@@ -463,7 +465,10 @@ fn a_section_shows_colours_bolts_contact_and_the_jump_at_two_places() {
     // The cut and its bar.
     assert_eq!(document.matches("data:image/png;base64,").count(), 2);
     let found = texts(&svg(&Drawing::Section(Box::new(section(None)))).unwrap());
-    assert!(holds(&found, "between bolts 1 and 2: 0.150 K/W"), "{found:?}");
+    assert!(
+        holds(&found, "between bolts 1 and 2: 0.150 K/W"),
+        "{found:?}"
+    );
 }
 
 #[test]
@@ -578,7 +583,10 @@ fn a_minimum_between_swept_torques_is_marked_where_it_lies() {
     });
     let texts = texts(&svg(&Drawing::Torque(swept)).unwrap());
     assert!(holds(&texts, "minimum, at 1.6 N\u{a0}m"), "{texts:?}");
-    assert!(holds(&texts, "best 1.6 N\u{a0}m, worse beyond"), "{texts:?}");
+    assert!(
+        holds(&texts, "best 1.6 N\u{a0}m, worse beyond"),
+        "{texts:?}"
+    );
 }
 
 #[test]

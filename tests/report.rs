@@ -742,14 +742,23 @@ fn the_best_torque_of_a_mount_is_that_of_most_resistance() {
     mount.required = Some((0.09, Limit::Least));
     mount.best = Some(1.6);
     let report = sweep::torque(&mount);
-    assert!(report.contains("1.600 N·m: highest source to sink"), "{report}");
+    assert!(
+        report.contains("1.600 N·m: highest source to sink"),
+        "{report}"
+    );
     assert!(!report.contains("lowest"), "{report}");
     mount.best = Some(1.0);
     let report = sweep::torque(&mount);
-    assert!(report.contains("first torque swept: less resists more"), "{report}");
+    assert!(
+        report.contains("first torque swept: less resists more"),
+        "{report}"
+    );
     // A best torque at the first step says that the range may end too early.
     let report = sweep::torque(&torque_sweep());
-    assert!(report.contains("first torque swept: the minimum may lie below"), "{report}");
+    assert!(
+        report.contains("first torque swept: the minimum may lie below"),
+        "{report}"
+    );
     assert!(report.lines().all(|line| line.chars().count() <= WIDTH));
 }
 
@@ -776,7 +785,10 @@ fn a_solved_heat_says_where_it_is_hottest_and_how_warm_the_plates_are() {
         "base 4.400 K",
         "panel 1.100 K",
     ] {
-        assert!(report.replace("\n  ", " ").contains(part), "{part}: {report}");
+        assert!(
+            report.replace("\n  ", " ").contains(part),
+            "{part}: {report}"
+        );
     }
     assert_eq!(
         json::estimate(&solved)["temperatures"],
@@ -792,8 +804,14 @@ fn a_solved_heat_says_where_it_is_hottest_and_how_warm_the_plates_are() {
     solved.heat = None;
     solved.cases[0].rise = None;
     let report = text::estimate(&solved);
-    for part in [": 0.3000 K/W above the sink surface", "across the faces 0.1100 K/W"] {
-        assert!(report.replace("\n  ", " ").contains(part), "{part}: {report}");
+    for part in [
+        ": 0.3000 K/W above the sink surface",
+        "across the faces 0.1100 K/W",
+    ] {
+        assert!(
+            report.replace("\n  ", " ").contains(part),
+            "{part}: {report}"
+        );
     }
     assert!(report.lines().all(|line| line.chars().count() <= WIDTH));
 }
@@ -817,18 +835,31 @@ fn media_stand_in_one_table_with_what_a_test_in_gas_says() {
     ] {
         assert!(table.contains(part), "{part}: {table}");
     }
-    assert!(table.lines().all(|line| line.chars().count() <= WIDTH), "{table}");
+    assert!(
+        table.lines().all(|line| line.chars().count() <= WIDTH),
+        "{table}"
+    );
     let object = json::media(&rows);
     has(
         &object[1],
-        &["medium", "pressure", "source_to_sink", "added_by_joint", "rise", "vacuum_over_medium"],
+        &[
+            "medium",
+            "pressure",
+            "source_to_sink",
+            "added_by_joint",
+            "rise",
+            "vacuum_over_medium",
+        ],
     );
     assert_eq!(object[0]["pressure"], Value::Null);
     assert_eq!(object[1]["pressure"], json!(101_325.0));
     assert!((object[1]["vacuum_over_medium"].as_f64().expect("a ratio") - 3.0).abs() < 1e-12);
     // Without vacuum there is nothing to hold a gas against.
     assert!(!media::table(&rows[1..], "service").contains("a test in"));
-    assert_eq!(json::media(&rows[1..])[0]["vacuum_over_medium"], Value::Null);
+    assert_eq!(
+        json::media(&rows[1..])[0]["vacuum_over_medium"],
+        Value::Null
+    );
     assert_eq!(media::table(&[], "service"), "");
 }
 
@@ -844,7 +875,13 @@ fn the_sum_of_the_rings_is_set_against_what_the_joint_adds() {
     };
     let told = text::ring_sum(&estimate(), &[vec![ring], vec![ring]]);
     // Two bolts of 100 W/K; the joint adds 0.125 K/W, 25 times 1/200.
-    for part in ["200.0 W/K", "0.005000 K/W", "0.1250 K/W", "25.00 times", "contact only"] {
+    for part in [
+        "200.0 W/K",
+        "0.005000 K/W",
+        "0.1250 K/W",
+        "25.00 times",
+        "contact only",
+    ] {
         assert!(told.contains(part), "{part}: {told}");
     }
     assert_eq!(text::ring_sum(&estimate(), &[]), "");

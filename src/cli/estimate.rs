@@ -137,11 +137,7 @@ impl Estimate {
             choice: self.field.choice()?,
             watch: field::watch(),
         };
-        let rings = if self.rings {
-            Rings::Told
-        } else {
-            Rings::Left
-        };
+        let rings = if self.rings { Rings::Told } else { Rings::Left };
         let media = chain::media(&joint, &self.media);
         match chain::estimate(&task, &options, (rings, &media)) {
             Ok(found) => {
@@ -177,12 +173,7 @@ impl Estimate {
         }
     }
 
-    fn tell(
-        &self,
-        name: &str,
-        found: &Estimated,
-        console: &mut Console,
-    ) -> Result<(), Trouble> {
+    fn tell(&self, name: &str, found: &Estimated, console: &mut Console) -> Result<(), Trouble> {
         let (estimate, rings) = (&found.estimate, &found.rings);
         if self.json {
             let mut object = json::estimate(estimate);

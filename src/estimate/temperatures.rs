@@ -70,7 +70,10 @@ pub fn heat_map(chain: &Chain, columns: usize) -> Result<Option<HeatMap>, Failur
     Ok(Some(HeatMap {
         window,
         size: [columns, rows],
-        rises: [values(&|point| point.rises[0]), values(&|point| point.rises[1])],
+        rises: [
+            values(&|point| point.rises[0]),
+            values(&|point| point.rises[1]),
+        ],
         concentration: values(&|point| point.concentration),
     }))
 }

@@ -114,7 +114,12 @@ pub(super) fn draw(plot: &SectionPlot) -> Result<Sheet, FigureError> {
     };
     bar(&mut sheet, &view, plot.heat);
     cut::draw(&mut sheet, &view, section);
-    axis::left(&mut sheet, view.frame, (&upright, "height, mm"), Grid::Without);
+    axis::left(
+        &mut sheet,
+        view.frame,
+        (&upright, "height, mm"),
+        Grid::Without,
+    );
     let (name, other, line) = match section.across {
         Across::X(y) => ("x", "y", y),
         Across::Y(x) => ("y", "x", x),
@@ -163,15 +168,15 @@ fn extent(section: &StackSection) -> Result<[[f64; 2]; 2], FigureError> {
     let parts = || section.plates.iter().flat_map(|plate| &plate.solid);
     let mut ends = [[f64::INFINITY, f64::NEG_INFINITY]; 2];
     for part in parts() {
+        for end in part.along.iter().chain(&part.heights) {
+            drawable(*end, "the section")?;
+        }
         for (ends, part) in ends.iter_mut().zip([part.along, part.heights]) {
             *ends = [ends[0].min(part[0]), ends[1].max(part[1])];
         }
     }
     if ends[0][0] > ends[0][1] {
         return Err(FigureError::Empty("the section"));
-    }
-    for end in ends.as_flattened() {
-        drawable(*end, "the section")?;
     }
     let [wide, tall] = ends.map(|[from, to]| to - from);
     let sound = wide > 1e-12 && tall > 1e-12 && tall < 1e3 * wide && wide < 1e6 * tall;

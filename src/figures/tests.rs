@@ -181,7 +181,10 @@ fn section([wide, tall]: [f64; 2], (size, bolts): (f64, usize), heat: Option<f64
         title: "A joint with a title that is long enough to be broken into lines".into(),
         section: StackSection {
             across: Across::Y(0.3 * wide),
-            plates: vec![plate("a base plate of some length", 0.5 * tall, 2.0), plate("panel", 0.0, -0.1)],
+            plates: vec![
+                plate("a base plate of some length", 0.5 * tall, 2.0),
+                plate("panel", 0.0, -0.1),
+            ],
             bolts: (0..bolts)
                 .map(|k| SectionBolt {
                     number: 7 * k + 1,

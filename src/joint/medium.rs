@@ -1,8 +1,7 @@
 //! Media by the words of joint files.
 
 use crate::{
-    catalog,
-    diagnostic,
+    catalog, diagnostic,
     joint::{Medium, service::ATMOSPHERE},
 };
 

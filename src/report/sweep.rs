@@ -168,7 +168,11 @@ fn advice(sweep: &TorqueSweep, best: Option<usize>, stated: Option<usize>) -> St
         let side = if gain < 0.0 { "above" } else { "below" };
         format!(", {} {side} the stated torque", percent(gain.abs()))
     });
-    let mut text = format!("best     {} N·m: {}{gain}\n", four(torque), praise(sweep, there));
+    let mut text = format!(
+        "best     {} N·m: {}{gain}\n",
+        four(torque),
+        praise(sweep, there)
+    );
     for line in remarks(sweep, index) {
         let _ = writeln!(text, "         {line}");
     }
@@ -199,7 +203,9 @@ fn praise(sweep: &TorqueSweep, there: f64) -> String {
 fn remarks(sweep: &TorqueSweep, index: usize) -> Vec<&'static str> {
     let mut lines = Vec::new();
     if sweep.minimum.is_some() {
-        lines.push("found between the rows; below it the contact lacks force, beyond it the gap opens");
+        lines.push(
+            "found between the rows; below it the contact lacks force, beyond it the gap opens",
+        );
     } else if index == 0 && sweep.points.len() > 1 {
         lines.push(if sweep.resists() {
             "it is the first torque swept: less resists more, and what the bolts must hold decides"

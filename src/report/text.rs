@@ -19,7 +19,7 @@ mod rings;
 mod temperatures;
 mod thermal;
 
-pub use rings::{rings, ring_sum};
+pub use rings::{ring_sum, rings};
 
 /// Widest line, characters.
 pub const WIDTH: usize = 100;

@@ -11,6 +11,10 @@ const MOST: usize = 8;
 /// below what any of the fields can tell.
 const FLAT: f64 = 2e-4;
 
+/// Step inwards from an end of the window that tells whether the curve falls there, as a share of
+/// the way to the next swept torque.
+const STEP_INWARDS: f64 = 0.05;
+
 /// The minimum of source to sink at nominal around the lowest swept torque that strength allows.
 ///
 /// None where that is an end of the window: the curve then only falls or only rises in it. Every
@@ -41,23 +45,41 @@ pub(super) fn minimum(
         let key = |index: &usize| points[*index].source_to_sink.nominal;
         key(one).total_cmp(&key(other))
     });
-    let Some(index) = low.filter(|index| *index > 0) else {
+    let Some(index) = low else {
         return Ok(None);
     };
+    let middle = known(&points[index]);
+    let left = index.checked_sub(1).map(|left| known(&points[left]));
     let right = if index + 1 < allowed {
-        known(&points[index + 1])
+        Some(known(&points[index + 1]))
     } else {
         // Between the last swept torque that strength allows and the largest the curve may turn.
-        match largest.filter(|largest| index + 1 < points.len() && *largest > points[index].torque)
-        {
-            Some(largest) => solved(largest)?,
-            None => return Ok(None),
-        }
+        let beyond = index + 1 < points.len();
+        let end = largest.filter(|largest| beyond && *largest > middle.torque);
+        end.map(&solved).transpose()?
     };
-    let mut bracket = [known(&points[index - 1]), known(&points[index]), right];
-    if bracket[2].source_to_sink <= bracket[1].source_to_sink {
+    let inwards =
+        |from: Minimum, to: Minimum| solved(from.torque + STEP_INWARDS * (to.torque - from.torque));
+    let bracket = match (left, right) {
+        (Some(left), Some(right)) => [left, middle, right],
+        // At an end of the window the curve may still fall inwards.
+        (None, Some(right)) => [middle, inwards(middle, right)?, right],
+        (Some(left), None) => [left, inwards(middle, left)?, middle],
+        (None, None) => return Ok(None),
+    };
+    let [ends, middle] = [[bracket[0], bracket[2]], [bracket[1]; 2]];
+    let lower = |(end, middle): (Minimum, Minimum)| middle.source_to_sink < end.source_to_sink;
+    if !ends.into_iter().zip(middle).all(lower) {
         return Ok(None);
     }
+    narrowed(bracket, solved).map(Some)
+}
+
+/// The lowest point that a search inside a bracket meets.
+fn narrowed(
+    mut bracket: [Minimum; 3],
+    solved: impl Fn(f64) -> Result<Minimum, Failure>,
+) -> Result<Minimum, Failure> {
     for _ in 0..MOST {
         let [left, middle, right] = bracket;
         let highest = left.source_to_sink.max(right.source_to_sink);
@@ -77,5 +99,5 @@ pub(super) fn minimum(
             outer
         };
     }
-    Ok(Some(bracket[1]))
+    Ok(bracket[1])
 }

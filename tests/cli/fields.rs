@@ -294,7 +294,11 @@ fn a_section_tells_the_heat_of_the_joint_or_per_watt() {
     let figures = draw(&folder, "two.toml");
     let read = |name: &str| fs::read_to_string(figures.join(name)).expect("a figure");
     let [section, faces] = ["section.svg", "temperature.svg"].map(read);
-    for part in ["upper on lower; temperature above", "at 5\u{a0}W", "at y = 12 mm"] {
+    for part in [
+        "upper on lower; temperature above",
+        "at 5\u{a0}W",
+        "at y = 12 mm",
+    ] {
         assert!(section.contains(part), "{part}");
     }
     assert!(section.contains("between bolts 1 and 2: "));
@@ -303,7 +307,12 @@ fn a_section_tells_the_heat_of_the_joint_or_per_watt() {
     // Round plates are solved on another mesh and show the same; no heat is stated there.
     let figures = draw(&folder, "round.toml");
     let section = fs::read_to_string(figures.join("section.svg")).expect("a figure");
-    for part in ["warm on cold", "per watt", "away from the bolt: ", "K/W across"] {
+    for part in [
+        "warm on cold",
+        "per watt",
+        "away from the bolt: ",
+        "K/W across",
+    ] {
         assert!(section.contains(part), "{part}");
     }
 }
@@ -316,7 +325,14 @@ fn rings_of_solved_fields_add_up_to_the_contact_and_say_that_it_is_not_the_joint
         let run = |more: &str| {
             stdout(
                 &within(&folder)
-                    .args(["estimate", file, "--field", "elastic", "--resolution", "fast"])
+                    .args([
+                        "estimate",
+                        file,
+                        "--field",
+                        "elastic",
+                        "--resolution",
+                        "fast",
+                    ])
                     .args(["--draws", "0", "--rings", more])
                     .assert()
                     .code(0),
@@ -333,7 +349,10 @@ fn rings_of_solved_fields_add_up_to_the_contact_and_say_that_it_is_not_the_joint
         let contact = object["results"]["contact"]["conductance"]["nominal"].as_f64();
         let contact = contact.expect("a number");
         // The rings are summed on finer samples than the heat's own grid: 0.1 % and 0.3 % apart.
-        assert!((sum / contact - 1.0).abs() < 0.01, "{file}: {sum} {contact}");
+        assert!(
+            (sum / contact - 1.0).abs() < 0.01,
+            "{file}: {sum} {contact}"
+        );
     }
 }
 
@@ -342,7 +361,14 @@ fn media_are_told_side_by_side_and_an_unknown_one_is_refused() {
     let folder = bench();
     let run = |more: &[&str]| {
         within(&folder)
-            .args(["estimate", "two.toml", "--field", "elastic", "--resolution", "fast"])
+            .args([
+                "estimate",
+                "two.toml",
+                "--field",
+                "elastic",
+                "--resolution",
+                "fast",
+            ])
             .args(["--draws", "0"])
             .args(more)
             .assert()

@@ -139,7 +139,10 @@ fn curve(nodes: &[[f64; 2]]) -> Vec<[f64; 2]> {
     };
     let at = |height: f64| -> f64 {
         let terms = nodes.iter().enumerate().map(|(index, [own, value])| {
-            let others = nodes.iter().enumerate().filter(|(other, _)| *other != index);
+            let others = nodes
+                .iter()
+                .enumerate()
+                .filter(|(other, _)| *other != index);
             let shape = others.map(|(_, [node, _])| (height - node) / (own - node));
             value * shape.product::<f64>()
         });
@@ -274,9 +277,8 @@ fn solid(
     };
     let mut found = Vec::new();
     let mut part = |heights: [f64; 2], inside: &dyn Fn(f64) -> bool| {
-        let covered = |along: f64| {
-            plate.covers(point(across, along)) && inside(along) && !open(along)
-        };
+        let covered =
+            |along: f64| plate.covers(point(across, along)) && inside(along) && !open(along);
         let spans = chords([from, to], covered);
         found.extend(spans.into_iter().map(|along| Solid { along, heights }));
     };
@@ -375,7 +377,10 @@ fn places(bolts: &[SectionBolt], [from, to]: [f64; 2]) -> Vec<(String, f64)> {
         // Clear of the wall of the hole, and still under the head.
         let reach = 0.25 * bolt.hole_radius + 0.75 * bolt.head_radius;
         let side = (towards - bolt.along).signum();
-        (format!("beside bolt {}", bolt.number), bolt.along + side * reach)
+        (
+            format!("beside bolt {}", bolt.number),
+            bolt.along + side * reach,
+        )
     };
     let middle = f64::midpoint(from, to);
     let pair = bolts
@@ -395,7 +400,10 @@ fn places(bolts: &[SectionBolt], [from, to]: [f64; 2]) -> Vec<(String, f64)> {
         [from, -1.0]
     };
     let away = f64::midpoint(bolt.along + side * bolt.head_radius, towards);
-    vec![beside(bolt, towards), ("away from the bolt".to_owned(), away)]
+    vec![
+        beside(bolt, towards),
+        ("away from the bolt".to_owned(), away),
+    ]
 }
 
 /// Where a line meets the heated zone.
@@ -422,7 +430,9 @@ mod tests {
 
     #[test]
     fn chords_find_edges_and_the_ends_of_the_line() {
-        let found = chords([0.0, 1.0], |at| at < 0.25 || (0.5..=0.75).contains(&at) || at > 0.9);
+        let found = chords([0.0, 1.0], |at| {
+            at < 0.25 || (0.5..=0.75).contains(&at) || at > 0.9
+        });
         let known = [[0.0, 0.25], [0.5, 0.75], [0.9, 1.0]];
         assert_eq!(found.len(), known.len());
         for (one, other) in found.iter().flatten().zip(known.iter().flatten()) {
@@ -439,7 +449,10 @@ mod tests {
             head_radius: 4.0,
             hole_radius: 2.0,
         };
-        let found = places(&[bolt(1, 10.0), bolt(4, 50.0), bolt(2, 100.0)], [0.0, 100.0]);
+        let found = places(
+            &[bolt(1, 10.0), bolt(4, 50.0), bolt(2, 100.0)],
+            [0.0, 100.0],
+        );
         assert_eq!(found[0].0, "beside bolt 1");
         assert!((12.0..=14.0).contains(&found[0].1));
         assert_eq!(found[1], ("between bolts 1 and 4".to_owned(), 30.0));

@@ -70,7 +70,9 @@ pub(super) trait Solver: Debug + Send + Sync {
 }
 
 /// Contact and heat of a joint under one load.
-pub(in crate::estimate::chain) trait Solved: Debug + Send + Sync {
+pub(in crate::estimate::chain) trait Solved:
+    Debug + Send + Sync
+{
     /// Resistances.
     fn path(&self) -> &Path;
 
