@@ -40,7 +40,7 @@ fn open_distance(joint: &Joint) -> f64 {
 /// spots, which know their ratio alone, as they are.
 fn joint(medium: &str) -> Joint {
     let medium = format!("service.medium=\"{medium}\"");
-    let factor = OPEN / open_distance(&joint_with(&[medium.clone()]));
+    let factor = OPEN / open_distance(&joint_with(std::slice::from_ref(&medium)));
     let mut sets = vec![medium];
     for plate in ["upper", "lower"] {
         let (roughness, slope) = (1.13137 * factor, 0.106_066 * factor);

@@ -126,7 +126,7 @@ pub(super) fn draw(plot: &SectionPlot) -> Result<Sheet, FigureError> {
     };
     let mut title = format!("{name}, mm, at {other} = {} mm", axis::plain(line * 1e3));
     if stretch > 1.0 {
-        title += &format!("; heights drawn {} ×", axis::plain(stretch));
+        title = format!("{title}; heights drawn {} ×", axis::plain(stretch));
     }
     axis::bottom(&mut sheet, view.frame, (&places, Some(&title)));
     let panel = Frame {

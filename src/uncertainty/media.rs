@@ -35,12 +35,11 @@ pub fn in_media(
             let there = chain.in_medium(medium.clone())?;
             let path = there.state(0, &Realisation::default())?.path;
             let (whole, added) = (path.source_to_sink, path.added_by_joint);
-            let (source_to_sink, added_by_joint) = match options.draws {
-                0 => (Band::nominal(whole), Band::nominal(added)),
-                _ => {
-                    let draws = draws(&there, 0, options)?;
-                    (draws.source_to_sink(whole), draws.added_by_joint(added))
-                }
+            let (source_to_sink, added_by_joint) = if options.draws == 0 {
+                (Band::nominal(whole), Band::nominal(added))
+            } else {
+                let draws = draws(&there, 0, options)?;
+                (draws.source_to_sink(whole), draws.added_by_joint(added))
             };
             Ok(InMedium {
                 medium: medium.clone(),

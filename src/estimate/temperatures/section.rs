@@ -189,10 +189,10 @@ pub fn stack_section(chain: &Chain) -> Result<Option<StackSection>, Failure> {
         })
         .filter(|through| through.plates.iter().all(|points| points.len() > 1))
         .collect();
-    let range = plates
-        .iter()
-        .filter_map(|plate| Some([*plate.section.along.first()?, *plate.section.along.last()?]))
-        .next();
+    let range = plates.iter().find_map(|plate| {
+        let along = &plate.section.along;
+        Some([*along.first()?, *along.last()?])
+    });
     Ok(range.map(|range| StackSection {
         touching: chords(range, |along| {
             let met = chain.met_at(point(across, along), &state);
