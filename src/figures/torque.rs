@@ -38,14 +38,13 @@ struct Point {
 
 /// Draws the sweep.
 pub(super) fn draw(sweep: &TorqueSweep) -> Result<Sheet, FigureError> {
-    let upper_points = band(sweep, |point| point.source_to_sink)?;
+    let upper_points = with_minimum(sweep, &band(sweep, |point| point.source_to_sink)?)?;
     let lower_points = band(sweep, |point| point.contact)?;
     let stated = drawable(sweep.stated, "the stated torque")?;
     let best = match sweep.best {
         Some(torque) => Some(drawable(torque, "the best torque")?),
         None => None,
     };
-    let minimum = minimum(sweep)?;
     let torques = || upper_points.iter().map(|p| p.torque).chain([stated]);
     let x_axis = Axis::over(
         torques().fold(f64::INFINITY, f64::min),
@@ -133,7 +132,9 @@ pub(super) fn draw(sweep: &TorqueSweep) -> Result<Sheet, FigureError> {
         let mut outline: Vec<[f64; 2]> =
             points.iter().map(|p| at(frame, axis, *p, p.low)).collect();
         outline.extend(points.iter().rev().map(|p| at(frame, axis, *p, p.high)));
-        sheet.area(frame.area(&outline), band_colour());
+        if points.iter().any(|point| point.low < point.high) {
+            sheet.area(frame.area(&outline), band_colour());
+        }
     }
     if let (Some((limit, _)), Some(lines)) = (required, note) {
         draw_requirement(&mut sheet, upper, &upper_axis, (limit, &lines));
@@ -143,13 +144,7 @@ pub(super) fn draw(sweep: &TorqueSweep) -> Result<Sheet, FigureError> {
         (upper, &upper_axis, &upper_points),
         (lower, &lower_axis, &lower_points),
     ] {
-        let mut shown: Vec<Point> = points.clone();
-        if frame == upper {
-            // The curve passes through its minimum, which lies between two swept torques.
-            shown.extend(minimum);
-            shown.sort_by(|one, other| one.torque.total_cmp(&other.torque));
-        }
-        let line: Vec<[f64; 2]> = shown
+        let line: Vec<[f64; 2]> = points
             .iter()
             .map(|p| at(frame, axis, *p, p.nominal))
             .collect();
@@ -159,9 +154,7 @@ pub(super) fn draw(sweep: &TorqueSweep) -> Result<Sheet, FigureError> {
         }
     }
     if let Some(best) = best
-        && let Some(value) = minimum
-            .map(|point| point.nominal)
-            .or_else(|| between(&upper_points, best))
+        && let Some(value) = between(&upper_points, best, |point| point.nominal)
     {
         let place = [
             across(best),
@@ -186,18 +179,27 @@ pub(super) fn draw(sweep: &TorqueSweep) -> Result<Sheet, FigureError> {
     Ok(sheet)
 }
 
-/// The minimum between the swept torques, without a band.
-fn minimum(sweep: &TorqueSweep) -> Result<Option<Point>, FigureError> {
+/// The points with the minimum between them, its band as wide as that of its neighbours.
+fn with_minimum(sweep: &TorqueSweep, points: &[Point]) -> Result<Vec<Point>, FigureError> {
+    let mut all = points.to_vec();
     let Some(found) = sweep.minimum else {
-        return Ok(None);
+        return Ok(all);
     };
+    let torque = drawable(found.torque, "the minimum")?;
     let value = drawable(found.source_to_sink, "the minimum")?;
-    Ok(Some(Point {
-        torque: drawable(found.torque, "the minimum")?,
-        low: value,
+    let at = |of: fn(&Point) -> f64| between(points, torque, of);
+    let band = at(|p| p.low).zip(at(|p| p.high)).zip(at(|p| p.nominal));
+    let (low, high) = band.map_or((value, value), |((low, high), nominal)| {
+        (value + low - nominal, value + high - nominal)
+    });
+    all.push(Point {
+        torque,
+        low,
         nominal: value,
-        high: value,
-    }))
+        high,
+    });
+    all.sort_by(|one, other| one.torque.total_cmp(&other.torque));
+    Ok(all)
 }
 
 fn nominal() -> Stroke {
@@ -352,17 +354,17 @@ fn draw_requirement(
     sheet.text([x, first + 14.0], lines[1].clone(), text);
 }
 
-/// The nominal value at a torque, linear between points.
-fn between(points: &[Point], torque: f64) -> Option<f64> {
+/// A value at a torque, linear between points.
+fn between(points: &[Point], torque: f64, of: fn(&Point) -> f64) -> Option<f64> {
     if let [only] = points {
-        return Some(only.nominal);
+        return Some(of(only));
     }
     let pair = points
         .windows(2)
         .find(|pair| pair[0].torque <= torque && torque <= pair[1].torque)?;
     let span = (pair[1].torque - pair[0].torque).max(f64::MIN_POSITIVE);
     let t = (torque - pair[0].torque) / span;
-    Some(pair[0].nominal + t * (pair[1].nominal - pair[0].nominal))
+    Some(of(&pair[0]) + t * (of(&pair[1]) - of(&pair[0])))
 }
 
 fn best_name(sweep: &TorqueSweep) -> &'static str {

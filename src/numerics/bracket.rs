@@ -2,6 +2,8 @@
 
 /// Least step from the middle and from the ends, as a share of the bracket.
 const LEAST_STEP: f64 = 0.04;
+/// Longer half over the shorter one above which the parabola is not asked.
+const LOPSIDED: f64 = 5.0;
 /// Share of the longer half that golden section takes.
 const GOLDEN: f64 = 0.381_966;
 
@@ -13,7 +15,7 @@ const GOLDEN: f64 = 0.381_966;
 /// ```
 ///
 /// The vertex of the parabola through them, or golden section of the longer half where they have
-/// none inside. Never on one of the points. The caller evaluates there and narrows the bracket.
+/// none inside or the halves are very unlike. Never on one of the points. The caller evaluates there and narrows the bracket.
 ///
 /// Source: successive parabolic interpolation (Brent 1973, chapter 5; from memory).
 /// Checked: `trials_close_in_on_a_minimum`, `a_trial_lies_inside_and_on_no_point`.
@@ -23,9 +25,11 @@ pub fn next_trial([(a, low), (b, middle), (c, high)]: [(f64, f64); 3]) -> f64 {
     let longer = if c - b > b - a { 1.0 } else { -1.0 };
     let (left, right) = ((b - a) * (middle - high), (b - c) * (middle - low));
     let vertex = b - 0.5 * ((b - a) * left - (b - c) * right) / (left - right);
-    // Negated, so that a vertex that is not a number counts as outside.
-    if !(a < vertex && vertex < c) {
-        let half = if longer > 0.0 { c - b } else { b - a };
+    let halves = [b - a, c - b];
+    let [shorter, half] = [halves[0].min(halves[1]), halves[0].max(halves[1])];
+    // Negated, so that a vertex that is not a number counts as outside. Beside a middle that sits at
+    // one end a parabola creeps, for it hardly knows the other half.
+    if !(a < vertex && vertex < c) || half > LOPSIDED * shorter {
         return b + longer * GOLDEN * half;
     }
     let vertex = vertex.clamp(a + 0.5 * step, c - 0.5 * step);
@@ -70,7 +74,10 @@ mod tests {
         ] {
             let x = next_trial(bracket);
             assert!(0.0 < x && x < 2.0, "{x} of {bracket:?}");
-            assert!(bracket.iter().all(|point| (point.0 - x).abs() > 1e-12), "{bracket:?}");
+            assert!(
+                bracket.iter().all(|point| (point.0 - x).abs() > 1e-12),
+                "{bracket:?}"
+            );
         }
     }
 }
