@@ -390,3 +390,24 @@ fn media_are_told_side_by_side_and_an_unknown_one_is_refused() {
     let refused = stderr(&run(&["--media", "vacuum,air,heluim"]).code(2));
     assert!(refused.contains("did you mean `helium`"), "{refused}");
 }
+
+#[test]
+fn the_best_torque_of_a_joint_that_is_to_resist_is_that_of_most_resistance() {
+    let folder = bench();
+    let swept = stdout(
+        &within(&folder)
+            .args([
+                "torque", "two.toml", "--draws", "0", "--steps", "4", "--json",
+            ])
+            .args(["--set", "service.medium=vacuum"])
+            .args([
+                "--set",
+                "service.require={ resistance = \"0.1 K/W\", bound = \"least\" }",
+            ])
+            .assert()
+            .code(0),
+    );
+    let swept: serde_json::Value = serde_json::from_str(&swept).expect("one object");
+    // In vacuum less torque resists more.
+    assert_eq!(swept["best"], swept["points"][0]["torque"], "{swept}");
+}

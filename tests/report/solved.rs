@@ -85,7 +85,7 @@ fn a_solved_heat_says_where_it_is_hottest_and_how_warm_the_plates_are() {
     let report = text::estimate(&solved);
     // 22 W times the values per watt.
     for part in [
-        "hottest point at x 40, y 20.5 mm of base, 5 mm above its lowest face",
+        "hottest point at x 40, y 21 mm of base, 5 mm above its lowest face",
         "base 4.400 K",
         "panel 1.100 K",
     ] {

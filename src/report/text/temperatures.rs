@@ -40,15 +40,13 @@ pub(super) fn told(estimate: &Estimate, case: &CaseResult) -> String {
 
 /// The hottest point in the coordinates of its plate.
 fn place(found: &Temperatures) -> String {
-    let [x, y, height] = found.hottest_at.map(|length| brief(rounded(1e3 * length)));
+    let [x, y, height] = found.hottest_at.map(|length| 1e3 * length);
+    // In plan the grid tells no more than whole millimetres.
+    let [x, y] = [x, y].map(|length| brief(length.round()));
+    let height = brief(0.1 * (10.0 * height).round());
     let name = found.names.first().map_or("", String::as_str);
     format!(
         "at x {x}, y {y} mm of {}, {height} mm above its lowest face",
         plain(name)
     )
-}
-
-/// To a tenth of a millimetre: the grid tells no more.
-fn rounded(millimetres: f64) -> f64 {
-    (10.0 * millimetres).round() / 10.0
 }
