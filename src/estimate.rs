@@ -7,12 +7,17 @@ mod forces;
 mod maps;
 mod results;
 mod surfaces;
+mod temperatures;
 
 pub use chain::{Chain, Meeting, State};
 pub use choice::{Choice, Fineness, Watch};
 pub use forces::Strength;
 pub use maps::{field_map, ring_tables};
 pub use results::*;
+pub use temperatures::{
+    FacePoint, HeatMap, SectionBolt, SectionPlate, Solid, StackSection, Temperatures, Through,
+    heat_map, stack_section,
+};
 
 pub use crate::resistance::RingRow;
 
@@ -227,6 +232,7 @@ fn case_result(chain: &Chain, case: usize, numerical_error: f64) -> Result<CaseR
             interface_drop: Band::nominal(heat * path.interface_drop),
             coolant_drop: path.coolant_drop.map(|drop| heat * drop),
         }),
+        temperatures: chain.temperatures(case)?,
         requirement: None,
         drivers: Vec::new(),
     })

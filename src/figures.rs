@@ -11,14 +11,17 @@ mod output;
 mod picture;
 mod plan;
 mod ramp;
+mod section;
 mod sheet;
 mod torque;
+mod warmth;
 
 pub use cumulative::{CumulativePlot, Curve, RadiusMark};
 pub use plan::{
-    DetailKind, PlanBolt, PlanDetail, PlanMap, PlanOutline, PlanPair, PlanShape, Scale,
+    DetailKind, FacePair, PlanBolt, PlanDetail, PlanMap, PlanOutline, PlanPair, PlanShape, Scale,
 };
 pub use ramp::Ramp;
+pub use section::SectionPlot;
 
 use crate::estimate::TorqueSweep;
 
@@ -38,6 +41,10 @@ pub enum Drawing {
     Plan(PlanMap),
     /// Pressure and gap over the same plan.
     PressureAndGap(Box<PlanPair>),
+    /// Temperatures of both faying faces on one scale.
+    Faces(Box<FacePair>),
+    /// Temperatures on a cut through the stack, and through it at two places.
+    Section(Box<SectionPlot>),
     /// Conductance gathered from the hole outwards.
     Cumulative(CumulativePlot),
     /// Resistance against torque.
@@ -83,6 +90,8 @@ fn sheet(drawing: &Drawing) -> Result<sheet::Sheet, FigureError> {
     match drawing {
         Drawing::Plan(map) => plan::draw(map),
         Drawing::PressureAndGap(pair) => plan::draw_pair(pair),
+        Drawing::Faces(pair) => plan::draw_faces(pair),
+        Drawing::Section(plot) => section::draw(plot),
         Drawing::Cumulative(plot) => cumulative::draw(plot),
         Drawing::Torque(sweep) => torque::draw(sweep),
     }

@@ -23,6 +23,7 @@ mod isolating;
 mod lands;
 mod maps;
 mod materials;
+mod medium;
 mod overrides;
 mod patches;
 mod patterns;

@@ -4,6 +4,7 @@ pub mod banded;
 pub mod block_grid;
 pub mod block_tridiagonal;
 pub mod bordered;
+pub mod bracket;
 pub mod columns;
 pub mod complementarity;
 pub mod condensation;

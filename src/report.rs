@@ -4,6 +4,7 @@ pub mod card;
 pub mod catalogue;
 pub mod json;
 pub mod listing;
+pub mod media;
 pub mod number;
 pub mod sweep;
 pub mod table;

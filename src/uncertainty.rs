@@ -5,9 +5,12 @@
 //! lubricant), which is the unfavourable reading: independent bolts would average out.
 
 mod inputs;
+mod media;
+mod minimum;
 mod sweep;
 
 pub use inputs::{Input, inputs};
+pub use media::{InMedium, in_media};
 pub use sweep::{SweepOptions, sweep_along, torque_sweep};
 
 use rayon::prelude::*;

@@ -1,5 +1,8 @@
 //! Figures as files: well formed, complete, repeatable, and errors instead of panics.
 
+#[path = "figures/heat.rs"]
+mod heat;
+
 use ringsum::{
     estimate::{Band, FieldMap, TorquePoint, TorqueSweep},
     figures::{
@@ -53,11 +56,11 @@ fn furnished(mut map: PlanMap) -> PlanMap {
             contact_radius: Some(7e-3),
         })
         .to_vec();
-    map.heated = Some(PlanShape::Polygon(vec![
+    map.heated = vec![PlanShape::Polygon(vec![
         [0.02, 0.01],
         [0.04, 0.01],
         [0.03, 0.03],
-    ]));
+    ])];
     map
 }
 
@@ -147,6 +150,7 @@ fn sweep() -> TorqueSweep {
         stated: 2.2,
         largest: Some((2.9, "yield of the bolt")),
         best: Some(2.8),
+        minimum: None,
         points: (1..=16)
             .map(|k| {
                 let torque = f64::from(k) / 4.0;
@@ -177,6 +181,9 @@ fn every_drawing() -> Vec<Drawing> {
         Drawing::Plan(furnished(
             PlanMap::gap("Box on panel", &solved()).expect("a solved field knows its gap"),
         )),
+        heat::flux(),
+        Drawing::Faces(Box::new(heat::faces(Some(22.0)))),
+        Drawing::Section(Box::new(heat::section(Some(22.0)))),
     ]
 }
 
@@ -437,6 +444,15 @@ fn hostile_titles_stay_text() {
                 pair.pressure.outlines[0].name = HOSTILE.into();
                 pair.gap.quantity = HOSTILE.repeat(9);
                 pair.gap.unit = HOSTILE.into();
+            }
+            Drawing::Faces(pair) => {
+                pair.warm.title = HOSTILE.repeat(40);
+                pair.cold.quantity = HOSTILE.into();
+            }
+            Drawing::Section(plot) => {
+                plot.title = HOSTILE.repeat(40);
+                plot.section.plates[0].name = HOSTILE.repeat(9);
+                plot.section.through[0].name = HOSTILE.into();
             }
             Drawing::Cumulative(plot) => {
                 plot.title = HOSTILE.repeat(40);

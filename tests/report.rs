@@ -1,5 +1,8 @@
 //! The report of `estimate`, as text and as JSON, from a result built by hand.
 
+#[path = "report/solved.rs"]
+mod solved;
+
 use ringsum::{
     diagnostic::{Assumption, Caution},
     estimate::{
@@ -71,6 +74,7 @@ fn case(name: &'static str, sink_temperature: f64) -> CaseResult {
             interface_drop: Band::nominal(2.9),
             coolant_drop: Some(0.75),
         }),
+        temperatures: None,
         requirement: Some(RequirementResult {
             kind: RequirementKind::Rise,
             limit: 5.0,
@@ -637,6 +641,7 @@ fn torque_sweep() -> TorqueSweep {
         stated: 1.7,
         largest: Some((2.04, "yield of the bolt")),
         best: Some(1.0),
+        minimum: None,
         points: vec![point(1.0, 0.1), point(1.6, 0.11), point(2.2, 0.12)],
         required: Some((0.115, Limit::Most)),
         cautions: Vec::new(),

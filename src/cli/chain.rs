@@ -6,12 +6,13 @@ use crate::{
     cli::console::Trouble,
     diagnostic,
     estimate::{
-        self, BEYOND_CONE, Chain, Estimate, Failure, FieldMap, Options, RingRow, TorqueSweep,
+        self, BEYOND_CONE, Chain, Estimate, Failure, FieldMap, HeatMap, Options, RingRow,
+        StackSection, TorqueSweep,
     },
     figures::{self, Drawing, Format},
-    joint::Joint,
+    joint::{Joint, Medium},
     pressure::elastic::Failure as Contact,
-    uncertainty::{self, SweepOptions},
+    uncertainty::{self, InMedium, SweepOptions},
     units::{self, Quantity},
 };
 
@@ -41,43 +42,89 @@ impl<'a> Task<'a> {
     }
 }
 
-/// Low, nominal and high of a joint.
-pub fn estimate(task: &Task, options: &Options) -> Result<Estimate, Trouble> {
-    let chain = task.chain()?;
-    task.watched(|| uncertainty::along(&chain, options))
-}
-
 /// The torque of one group swept.
 pub fn torque_sweep(task: &Task, options: &SweepOptions) -> Result<TorqueSweep, Trouble> {
     let chain = task.chain()?;
     task.watched(|| uncertainty::sweep_along(&chain, options))
 }
 
-/// An estimate with the rings of every bolt.
-pub fn with_rings(
+/// Whether the rings of every bolt are asked for.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Rings {
+    /// They are.
+    Told,
+    /// They are not.
+    Left,
+}
+
+/// An estimate and what was asked for beside it.
+#[derive(Clone, Debug)]
+pub struct Estimated {
+    /// Low, nominal and high.
+    pub estimate: Estimate,
+    /// Rings of every bolt; empty unless asked for.
+    pub rings: Vec<Vec<RingRow>>,
+    /// The same joint in other media; empty unless asked for.
+    pub media: Vec<InMedium>,
+}
+
+/// Low, nominal and high of a joint, with rings and media as asked for.
+pub fn estimate(
     task: &Task,
     options: &Options,
-) -> Result<(Estimate, Vec<Vec<RingRow>>), Trouble> {
+    (rings, media): (Rings, &[Medium]),
+) -> Result<Estimated, Trouble> {
     let chain = task.chain()?;
     task.watched(|| {
-        let found = uncertainty::along(&chain, options)?;
-        Ok((found, estimate::ring_tables(&chain)?))
+        Ok(Estimated {
+            estimate: uncertainty::along(&chain, options)?,
+            rings: match rings {
+                Rings::Told => estimate::ring_tables(&chain)?,
+                Rings::Left => Vec::new(),
+            },
+            media: uncertainty::in_media(&chain, media, options)?,
+        })
     })
 }
 
-/// What the figures show: nominal results, fields over the plan, rings of every bolt.
-pub fn fields(
-    task: &Task,
-    columns: usize,
-) -> Result<(Estimate, FieldMap, Vec<Vec<RingRow>>), Trouble> {
+/// The word of a medium from the command line, if a joint file would take it.
+pub fn medium(word: &str) -> Result<String, String> {
+    Medium::named(word, None).map(|medium| medium.word())
+}
+
+/// Media by their words, gases at the pressure of the joint's own gas where it has one.
+pub fn media(joint: &Joint, words: &[String]) -> Vec<Medium> {
+    let pressure = joint.service.medium.pressure();
+    let named = words.iter().map(|word| Medium::named(word, pressure));
+    named.filter_map(Result::ok).collect()
+}
+
+/// What the figures show.
+#[derive(Clone, Debug)]
+pub struct Fields {
+    /// Nominal results.
+    pub nominal: Estimate,
+    /// Pressure, gap and conductance over the plan.
+    pub map: FieldMap,
+    /// Rings of every bolt.
+    pub rings: Vec<Vec<RingRow>>,
+    /// Temperatures of the faces and the flux between them; none for the cone.
+    pub heat: Option<HeatMap>,
+    /// A cut through the stack; none for the cone.
+    pub section: Option<StackSection>,
+}
+
+/// What the figures show, maps `columns` points wide.
+pub fn fields(task: &Task, columns: usize) -> Result<Fields, Trouble> {
     let chain = task.chain()?;
     task.watched(|| {
-        let nominal = uncertainty::along(&chain, &Options { draws: 0, seed: 1 })?;
-        Ok((
-            nominal,
-            estimate::field_map(&chain, columns)?,
-            estimate::ring_tables(&chain)?,
-        ))
+        Ok(Fields {
+            nominal: uncertainty::along(&chain, &Options { draws: 0, seed: 1 })?,
+            map: estimate::field_map(&chain, columns)?,
+            rings: estimate::ring_tables(&chain)?,
+            heat: estimate::heat_map(&chain, columns)?,
+            section: estimate::stack_section(&chain)?,
+        })
     })
 }
 

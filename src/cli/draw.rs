@@ -20,7 +20,8 @@ use std::{
 /// Cells across a map: finer than print shows.
 const COLUMNS: usize = 400;
 
-/// Draw pressure, gap (elastic field), local conductance and its growth around the bolts
+/// Draw pressure, local conductance and its growth around the bolts; with --field elastic also gap,
+/// temperatures of both faces, heat flux between them and a section through the stack
 #[derive(Debug, Args)]
 pub struct Draw {
     /// Joint file; - reads standard input
@@ -87,9 +88,9 @@ impl Draw {
             choice: self.field.choice()?,
             watch: field::watch(),
         };
-        let (nominal, field, rings) = chain::fields(&task, COLUMNS)?;
+        let fields = chain::fields(&task, COLUMNS)?;
         let mut files = Vec::new();
-        for (name, drawing) in drawings::of_joint(&joint, &nominal, (&field, &rings)) {
+        for (name, drawing) in drawings::of_joint(&joint, &fields) {
             for format in formats {
                 let bytes = chain::render(&drawing, *format)?;
                 files.push((self.path(name, *format), bytes));

@@ -1,10 +1,11 @@
 //! What the figures show of a joint, gathered from the joint and its results.
 
 use crate::{
+    cli::chain::Fields,
     estimate::{Estimate, FieldMap, RingRow},
     figures::{
-        CumulativePlot, Curve, DetailKind, Drawing, PlanBolt, PlanDetail, PlanMap, PlanOutline,
-        PlanPair, PlanShape, RadiusMark,
+        CumulativePlot, Curve, DetailKind, Drawing, FacePair, PlanBolt, PlanDetail, PlanMap,
+        PlanOutline, PlanPair, PlanShape, RadiusMark, SectionPlot,
     },
     joint::{Joint, Outline, Patch, Plate, Zone},
 };
@@ -13,21 +14,34 @@ const PRESSURE: &str = "pressure";
 const PRESSURE_AND_GAP: &str = "pressure_and_gap";
 const CONDUCTANCE: &str = "conductance";
 const CUMULATIVE: &str = "cumulative";
+const FLUX: &str = "flux";
+const TEMPERATURE: &str = "temperature";
+const SECTION: &str = "section";
 
 /// Every file name a figure may have, in the order of force and heat.
-pub const NAMES: [&str; 4] = [PRESSURE, PRESSURE_AND_GAP, CONDUCTANCE, CUMULATIVE];
+pub const NAMES: [&str; 7] = [
+    PRESSURE,
+    PRESSURE_AND_GAP,
+    CONDUCTANCE,
+    CUMULATIVE,
+    FLUX,
+    TEMPERATURE,
+    SECTION,
+];
 
 /// Pressure, local conductance and cumulative conductance, each with its file name; a solved field
-/// shows its gap beside the pressure.
-pub fn of_joint(
-    joint: &Joint,
-    nominal: &Estimate,
-    (field, rings): (&FieldMap, &[Vec<RingRow>]),
-) -> Vec<(&'static str, Drawing)> {
+/// shows its gap beside the pressure, and what heat does.
+pub fn of_joint(joint: &Joint, fields: &Fields) -> Vec<(&'static str, Drawing)> {
+    let (nominal, field) = (&fields.nominal, &fields.map);
     let furnish = |map: PlanMap| PlanMap {
         outlines: joint.plates.iter().map(outline).collect(),
         bolts: bolts(joint, nominal, field),
-        heated: joint.source.alone().and_then(|source| heated(source.zone)),
+        heated: joint
+            .source
+            .zones()
+            .into_iter()
+            .filter_map(|(zone, _)| heated(zone))
+            .collect(),
         details: joint.plates.iter().flat_map(details).collect(),
         ..map
     };
@@ -44,14 +58,31 @@ pub fn of_joint(
     let conductance = Drawing::Plan(furnish(PlanMap::conductance(&joint.title, field)));
     let cumulative = Drawing::Cumulative(CumulativePlot {
         title: joint.title.clone(),
-        curves: curves(rings),
+        curves: curves(&fields.rings),
         marks: marks(joint, nominal),
     });
-    vec![
+    let mut drawings = vec![
         pressure,
         (CONDUCTANCE, conductance),
         (CUMULATIVE, cumulative),
-    ]
+    ];
+    let heat = joint.service.heat;
+    if let Some(map) = &fields.heat {
+        let flux = furnish(PlanMap::flux(&joint.title, (field, map)));
+        drawings.push((FLUX, Drawing::Plan(flux)));
+        let names = [&joint.plates[0].name, &joint.plates[1].name].map(String::as_str);
+        let faces = FacePair::of(&joint.title, (field, map), (names, heat)).furnished(furnish);
+        drawings.push((TEMPERATURE, Drawing::Faces(Box::new(faces))));
+    }
+    if let Some(section) = &fields.section {
+        let plot = SectionPlot {
+            title: joint.title.clone(),
+            section: section.clone(),
+            heat,
+        };
+        drawings.push((SECTION, Drawing::Section(Box::new(plot))));
+    }
+    drawings
 }
 
 fn outline(plate: &Plate) -> PlanOutline {

@@ -2,15 +2,15 @@
 
 use crate::{
     cli::{
-        chain::{self, Task},
+        chain::{self, Estimated, Rings, Task},
         check,
         console::{Console, Layout, Outcome, Trouble},
         field::{self, Field},
         input,
     },
-    estimate::{self, Options, RingRow},
+    estimate::Options,
     report::{
-        json,
+        json, media,
         text::{self, Detail},
     },
 };
@@ -50,6 +50,9 @@ pub struct Estimate {
     /// Add the rings around every bolt
     #[arg(long)]
     rings: bool,
+    /// Add a table of the same joint in media: vacuum,air,helium
+    #[arg(long, value_name = "MEDIA", value_delimiter = ',', value_parser = chain::medium)]
+    media: Vec<String>,
     /// Print one JSON object per file, in SI
     #[arg(long)]
     json: bool,
@@ -134,15 +137,12 @@ impl Estimate {
             choice: self.field.choice()?,
             watch: field::watch(),
         };
-        let found = if self.rings {
-            chain::with_rings(&task, &options)
-        } else {
-            chain::estimate(&task, &options).map(|estimate| (estimate, Vec::new()))
-        };
-        match found {
-            Ok((estimate, rings)) => {
-                self.tell(&source.name, (&estimate, &rings), console)?;
-                Ok(if self.strict && estimate.has_cautions() {
+        let rings = if self.rings { Rings::Told } else { Rings::Left };
+        let media = chain::media(&joint, &self.media);
+        match chain::estimate(&task, &options, (rings, &media)) {
+            Ok(found) => {
+                self.tell(&source.name, &found, console)?;
+                Ok(if self.strict && found.estimate.has_cautions() {
                     Outcome::Cautioned
                 } else {
                     Outcome::Done
@@ -173,17 +173,16 @@ impl Estimate {
         }
     }
 
-    fn tell(
-        &self,
-        name: &str,
-        (estimate, rings): (&estimate::Estimate, &[Vec<RingRow>]),
-        console: &mut Console,
-    ) -> Result<(), Trouble> {
+    fn tell(&self, name: &str, found: &Estimated, console: &mut Console) -> Result<(), Trouble> {
+        let (estimate, rings) = (&found.estimate, &found.rings);
         if self.json {
             let mut object = json::estimate(estimate);
             object["file"] = name.into();
             if self.rings {
                 object["rings"] = json::rings(rings);
+            }
+            if !self.media.is_empty() {
+                object["media"] = json::media(&found.media);
             }
             console.json(&object, Layout::of_batch(self.files.len()))?;
             return Ok(());
@@ -194,7 +193,12 @@ impl Estimate {
             (false, false) => Detail::Screen,
         };
         let mut report = text::painted(&text::estimate_at(estimate, detail));
+        if let Some(case) = estimate.cases.first().filter(|_| !found.media.is_empty()) {
+            report.push('\n');
+            report.push_str(&media::table(&found.media, case.name));
+        }
         report.push_str(&text::rings(rings));
+        report.push_str(&text::ring_sum(estimate, rings));
         console.result(&report)?;
         Ok(())
     }

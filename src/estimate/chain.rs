@@ -6,6 +6,7 @@ mod elastic;
 mod form;
 mod geometry;
 mod levels;
+mod temperatures;
 
 pub(super) use levels::LARGE_ERROR;
 
@@ -124,8 +125,13 @@ impl<'a> Chain<'a> {
 
     /// The same joint in vacuum; plates, cells and grid are shared.
     pub fn in_vacuum(&self) -> Result<Chain<'static>, Failure> {
+        self.in_medium(Medium::Vacuum)
+    }
+
+    /// The same joint in another medium; plates, cells, grid and contact are shared.
+    pub fn in_medium(&self, medium: Medium) -> Result<Chain<'static>, Failure> {
         let mut joint = self.joint().clone();
-        joint.service.medium = Medium::Vacuum;
+        joint.service.medium = medium;
         self.with(joint)
     }
 

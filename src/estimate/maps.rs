@@ -58,7 +58,7 @@ pub fn ring_tables(chain: &Chain) -> Result<Vec<Vec<RingRow>>, Failure> {
 }
 
 /// The rectangle that holds both plates: left, lower, right, upper, m.
-fn window(joint: &Joint) -> [f64; 4] {
+pub(super) fn window(joint: &Joint) -> [f64; 4] {
     joint
         .plates
         .iter()

@@ -5,7 +5,10 @@ use crate::{
         Assumption, Caution,
         registry::{self, Gravity},
     },
-    estimate::cautions::{FLATNESS_DECIDES, GAP_IGNORED},
+    estimate::{
+        Temperatures,
+        cautions::{FLATNESS_DECIDES, GAP_IGNORED},
+    },
     joint::{Limit, RequirementKind},
 };
 
@@ -254,6 +257,8 @@ pub struct CaseResult {
     pub footprint: f64,
     /// Temperature rises, when heat is stated.
     pub rise: Option<Rise>,
+    /// Temperatures of a solved heat at nominal; none for the cone, which solves none.
+    pub temperatures: Option<Temperatures>,
     /// The requirement, when stated.
     pub requirement: Option<RequirementResult>,
     /// Share of the variance of the source-to-sink resistance by input, largest first; empty without draws.
@@ -382,6 +387,17 @@ pub struct TorquePoint {
     pub passes: bool,
 }
 
+/// The torque at which source to sink is lowest.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Minimum {
+    /// Torque, N m.
+    pub torque: f64,
+    /// Source to sink there at nominal, K/W.
+    pub source_to_sink: f64,
+    /// What the joint adds there at nominal, K/W.
+    pub added_by_joint: f64,
+}
+
 /// Resistance against the torque of one fastener group, the others as stated.
 #[derive(Clone, Debug, PartialEq)]
 pub struct TorqueSweep {
@@ -395,8 +411,11 @@ pub struct TorqueSweep {
     pub stated: f64,
     /// Largest torque that passes every limit, N m, and the limit that ends it.
     pub largest: Option<(f64, &'static str)>,
-    /// Torque of the lowest source-to-sink resistance among those that strength allows, N m.
+    /// Torque of the lowest source-to-sink resistance among those that strength allows, N m; of the
+    /// highest where the requirement asks for at least so much.
     pub best: Option<f64>,
+    /// The lowest point of the curve between swept torques, where it has one inside the window.
+    pub minimum: Option<Minimum>,
     /// Points, torque rising.
     pub points: Vec<TorquePoint>,
     /// Requirement in K/W of source to sink, where one can be put so.
@@ -406,6 +425,11 @@ pub struct TorqueSweep {
 }
 
 impl TorqueSweep {
+    /// Whether the joint is to resist: the best torque is then that of most resistance.
+    pub fn resists(&self) -> bool {
+        matches!(self.required, Some((_, Limit::Least)))
+    }
+
     /// Whether the gap between the bolts, which grows with the force, matters and is not known.
     pub fn gap_unknown(&self) -> bool {
         self.cautions

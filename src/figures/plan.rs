@@ -16,22 +16,29 @@ use crate::{
 
 mod bolts;
 mod contour;
+mod faces;
 mod pair;
 mod parts;
 mod raster;
 mod shapes;
 
+pub use faces::FacePair;
+pub(super) use faces::draw as draw_faces;
 pub use pair::PlanPair;
 pub(super) use pair::draw as draw_pair;
 pub use shapes::{DetailKind, PlanBolt, PlanDetail, PlanOutline, PlanShape};
 
 /// How the values of a map meet its colours.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+#[derive(Clone, Copy, Debug, PartialEq)]
 pub enum Scale {
     /// Evenly from zero (or from the lowest value, where that is negative).
     Linear,
     /// By their logarithm, over at most three decades below the highest.
     Logarithmic,
+    /// By their logarithm, over at most two decades below the highest.
+    TwoDecades,
+    /// Evenly between two values, SI, which several maps may share.
+    Between([f64; 2]),
 }
 
 /// A field over the plan.
@@ -62,7 +69,7 @@ pub struct PlanMap {
     /// The bolts, numbered in this order.
     pub bolts: Vec<PlanBolt>,
     /// Where heat enters, when that is not the whole face.
-    pub heated: Option<PlanShape>,
+    pub heated: Vec<PlanShape>,
     /// Where contact ends, lines in joint coordinates, m; for fields whose contact is not round.
     pub contact: Vec<Vec<[f64; 2]>>,
 }
@@ -85,7 +92,7 @@ impl PlanMap {
             outlines: Vec::new(),
             details: Vec::new(),
             bolts: Vec::new(),
-            heated: None,
+            heated: Vec::new(),
             contact: match field.gap {
                 Some(_) => contour::contact_edge(field),
                 None => Vec::new(),
@@ -120,7 +127,7 @@ impl PlanMap {
     /// The ground where the field has no value: tinted where paper white is a value itself.
     fn ground(&self) -> Option<Colour> {
         match self.ramp {
-            Ramp::Sea => None,
+            Ramp::Sea | Ramp::Ember => None,
             Ramp::Umber => Some(parts::TINT),
         }
     }
@@ -249,7 +256,12 @@ fn colour_axis(map: &PlanMap) -> Result<Axis, FigureError> {
         return Err(FigureError::Empty("the field"));
     }
     Ok(match map.scale {
+        Scale::Between(ends) => {
+            let [from, to] = ends.map(|end| drawable(end * map.factor, "the scale"));
+            Axis::over(from?, to?)
+        }
         Scale::Logarithmic if high > 0.0 => Axis::logarithmic(least.max(high * 1e-3), high),
+        Scale::TwoDecades if high > 0.0 => Axis::logarithmic(least.max(high * 1e-2), high),
         _ => Axis::over(low.min(0.0), high.max(low.min(0.0))),
     })
 }

@@ -1,5 +1,5 @@
 //! The colours of a field: our own ramps, one from straw through sea green to night blue, one from
-//! paper through ochre to umber.
+//! paper through ochre to umber, one from ash through rose to plum.
 //!
 //! Control points stand in CIELAB (CIE 1976, D65) on a falling lightness; a Catmull–Rom curve
 //! joins them and is walked in equal steps of colour difference ΔE*ab. Lightness falls all the
@@ -21,6 +21,8 @@ pub enum Ramp {
     Sea,
     /// Paper, ochre, umber: what stands open; paper white is shut.
     Umber,
+    /// Ash, rose, plum: what is warm.
+    Ember,
 }
 
 /// Lightness and the two colour axes, light to dark.
@@ -45,13 +47,24 @@ const UMBER: Control = [
     [29.0, 14.0, 17.0],
 ];
 
+const EMBER: Control = [
+    [96.0, 1.0, 3.0],
+    [84.5, 19.0, 5.0],
+    [71.0, 37.0, 3.0],
+    [56.0, 49.0, -4.0],
+    [40.0, 43.0, -14.0],
+    [24.0, 29.0, -18.0],
+];
+
 impl Ramp {
     /// The colours, light to dark.
     pub(super) fn colours(self) -> &'static [Colour; STEPS] {
         static SEA_COLOURS: OnceLock<[Colour; STEPS]> = OnceLock::new();
         static UMBER_COLOURS: OnceLock<[Colour; STEPS]> = OnceLock::new();
+        static EMBER_COLOURS: OnceLock<[Colour; STEPS]> = OnceLock::new();
         let (colours, control) = match self {
             Self::Sea => (&SEA_COLOURS, &SEA),
+            Self::Ember => (&EMBER_COLOURS, &EMBER),
             Self::Umber => (&UMBER_COLOURS, &UMBER),
         };
         colours.get_or_init(|| {
@@ -161,7 +174,7 @@ mod tests {
     #[test]
     fn the_ramps_darken_all_the_way() {
         // Rounding to eight bits may hold two neighbours level, so every fourth step is compared.
-        for ramp in [Ramp::Sea, Ramp::Umber] {
+        for ramp in [Ramp::Sea, Ramp::Umber, Ramp::Ember] {
             let steps: Vec<_> = ramp.colours().iter().step_by(4).collect();
             for pair in steps.windows(2) {
                 assert!(luminance(*pair[1]) < luminance(*pair[0]), "{pair:?}");
@@ -171,7 +184,7 @@ mod tests {
 
     #[test]
     fn steps_of_the_ramp_look_equal() {
-        for control in [&SEA, &UMBER] {
+        for control in [&SEA, &UMBER, &EMBER] {
             let path = even_path(control);
             let steps: Vec<f64> = path.windows(2).map(|p| difference(p[0], p[1])).collect();
             let mean = steps.iter().sum::<f64>() / steps.len() as f64;
@@ -189,6 +202,13 @@ mod tests {
             assert!(b >= r, "step {step} of the sea");
             let Colour(r, _, b) = Ramp::Umber.colours()[step];
             assert!(r > b.saturating_add(25), "step {step} of umber");
+            // Green leads red on the sea and blue on umber; here it falls behind both.
+            let Colour(r, g, b) = Ramp::Ember.colours()[step];
+            assert!(g < r && g < b, "step {step} of ember");
+            let Colour(r, g, _) = Ramp::Sea.colours()[step];
+            assert!(g > r, "step {step} of the sea");
+            let Colour(_, g, b) = Ramp::Umber.colours()[step];
+            assert!(g > b, "step {step} of umber");
         }
         assert_eq!(Ramp::Umber.colour(0.0), PAPER);
     }

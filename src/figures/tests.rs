@@ -4,10 +4,13 @@
 use proptest::prelude::*;
 
 use crate::{
-    estimate::{Band, TorquePoint, TorqueSweep},
+    estimate::{
+        Band, Minimum, SectionBolt, SectionPlate, Solid, StackSection, Through, TorquePoint,
+        TorqueSweep,
+    },
     figures::{
-        CumulativePlot, Curve, DetailKind, Drawing, PlanBolt, PlanDetail, PlanMap, PlanOutline,
-        PlanPair, PlanShape, RadiusMark, Ramp, Scale,
+        CumulativePlot, Curve, DetailKind, Drawing, FacePair, PlanBolt, PlanDetail, PlanMap,
+        PlanOutline, PlanPair, PlanShape, RadiusMark, Ramp, Scale, SectionPlot,
         clip::Frame,
         lettering::{Anchor, Lettering, Turn},
         sheet as draw,
@@ -15,6 +18,7 @@ use crate::{
         svg,
     },
     joint::Limit,
+    resistance::columns::{Across, Section},
 };
 
 /// The rectangle a text covers.
@@ -106,7 +110,7 @@ fn plan(window: [f64; 2], factor: f64, scale: Scale, bolts: usize) -> PlanMap {
                 size: window.map(|side| side / 4.0),
             },
         }],
-        heated: None,
+        heated: Vec::new(),
         contact: Vec::new(),
     }
 }
@@ -138,6 +142,7 @@ fn sweep(stated: f64, largest: f64, required: f64, size: f64) -> TorqueSweep {
         stated,
         largest: Some((largest, "pressure under the head")),
         best: Some(3.0),
+        minimum: None,
         points: (1..=20)
             .map(|k| {
                 let torque = f64::from(k) / 5.0;
@@ -157,8 +162,94 @@ fn sweep(stated: f64, largest: f64, required: f64, size: f64) -> TorqueSweep {
     }
 }
 
+/// Two plates of any size about some bolts; temperatures of any size.
+fn section([wide, tall]: [f64; 2], (size, bolts): (f64, usize), heat: Option<f64>) -> SectionPlot {
+    let lines: Vec<f64> = (0..=8).map(|k| wide * f64::from(k) / 8.0).collect();
+    let plate = |name: &str, foot: f64, rise: f64| SectionPlate {
+        name: name.into(),
+        solid: vec![Solid {
+            along: [0.0, wide],
+            heights: [foot, foot + 0.5 * tall],
+        }],
+        section: Section {
+            heights: vec![foot, foot + 0.5 * tall],
+            rise: vec![vec![Some(size * rise), Some(size * (rise + 0.5))]; lines.len()],
+            along: lines.clone(),
+        },
+    };
+    SectionPlot {
+        title: "A joint with a title that is long enough to be broken into lines".into(),
+        section: StackSection {
+            across: Across::Y(0.3 * wide),
+            plates: vec![
+                plate("a base plate of some length", 0.5 * tall, 2.0),
+                plate("panel", 0.0, -0.1),
+            ],
+            bolts: (0..bolts)
+                .map(|k| SectionBolt {
+                    number: 7 * k + 1,
+                    along: wide * (k as f64 + 0.5) / bolts as f64,
+                    head_radius: 0.02 * wide,
+                    hole_radius: 0.01 * wide,
+                })
+                .collect(),
+            heated: vec![[0.2 * wide, 0.9 * wide]],
+            touching: vec![[0.1 * wide, 0.2 * wide]],
+            through: ["beside bolt 1", "between bolts 1 and 8"]
+                .map(|name| Through {
+                    name: name.into(),
+                    along: 0.4 * wide,
+                    plates: vec![
+                        vec![[0.5 * tall, size], [tall, 2.0 * size]],
+                        vec![[0.0, 0.0], [0.5 * tall, 0.1 * size]],
+                    ],
+                })
+                .to_vec(),
+        },
+        heat,
+    }
+}
+
 proptest! {
     #![proptest_config(crate::fixed_cases(48))]
+
+    #[test]
+    fn texts_of_sections_are_clear(
+        width in -3.0..0.5_f64,
+        aspect in -3.0..2.0_f64,
+        size in -12.0..12.0_f64,
+        bolts in 0..40_usize,
+        heated: bool,
+    ) {
+        let lengths = [10_f64.powf(width), 10_f64.powf(width + aspect)];
+        let plot = section(lengths, (10_f64.powf(size), bolts), heated.then_some(22.0));
+        let sheet = draw(&Drawing::Section(Box::new(plot))).unwrap();
+        prop_assert_eq!(texts_are_clear(&sheet), Ok(()));
+    }
+
+    #[test]
+    fn texts_of_faces_are_clear(
+        width in -3.0..0.5_f64,
+        aspect in -1.5..1.5_f64,
+        size in -12.0..12.0_f64,
+        bolts in 0..12_usize,
+    ) {
+        let window = [10_f64.powf(width), 10_f64.powf(width + aspect)];
+        let face = |name: &str| PlanMap {
+            quantity: format!("face of {name}"),
+            unit: "K".into(),
+            ramp: Ramp::Ember,
+            scale: Scale::Between([0.0, 12.0 * 10_f64.powf(size)]),
+            ..plan(window, 10_f64.powf(size), Scale::Linear, bolts)
+        };
+        let pair = FacePair {
+            warm: face("a base plate of some length"),
+            cold: face("panel"),
+            heat: Some(22.0),
+        };
+        let sheet = draw(&Drawing::Faces(Box::new(pair))).unwrap();
+        prop_assert_eq!(texts_are_clear(&sheet), Ok(()));
+    }
 
     #[test]
     fn texts_of_plans_are_clear(
@@ -280,7 +371,7 @@ proptest! {
                     contact_radius: Some(n(37 + k)),
                 })
                 .collect(),
-            heated: Some(PlanShape::Rectangle { corner: [n(40), n(41)], size: [n(42), n(43)] }),
+            heated: vec![PlanShape::Rectangle { corner: [n(40), n(41)], size: [n(42), n(43)] }],
             details: [DetailKind::CutOut, DetailKind::Foot, DetailKind::Rib]
                 .into_iter()
                 .enumerate()
@@ -305,13 +396,30 @@ proptest! {
         let mut torque = sweep(2.2, 2.9, 0.8, 1.0);
         torque.stated = n(45);
         torque.best = Some(n(46));
+        torque.minimum = Some(Minimum {
+            torque: n(46),
+            source_to_sink: n(52),
+            added_by_joint: n(53),
+        });
         torque.largest = Some((n(47), "yield"));
         torque.required = Some((n(48), Limit::Least));
         torque.points[3].torque = n(49);
         torque.points[5].contact.high = Some(n(50));
         torque.points[6].source_to_sink.nominal = n(51);
+        let mut cut = section([frame(0, 0.05), frame(1, 0.01)], (frame(2, 1.0), 3), Some(frame(3, 22.0)));
+        cut.section.plates[0].section.rise[1][1] = Some(frame(54, 1.0));
+        cut.section.bolts[1].along = n(55);
+        cut.section.heated = vec![[n(56), n(57)]];
+        cut.section.touching.push([n(58), n(59)]);
+        cut.section.through[0].along = n(4);
+        cut.section.through[1].plates[0][0] = [n(5), frame(6, 0.5)];
+        let faces = FacePair {
+            warm: PlanMap { scale: Scale::Between([n(7), n(8)]), ..map.clone() },
+            cold: map.clone(),
+            heat: Some(n(9)),
+        };
         let twice = PlanPair { pressure: map.clone(), gap: map.clone() };
-        for drawing in [Drawing::Plan(map), Drawing::PressureAndGap(Box::new(twice)), Drawing::Cumulative(plot), Drawing::Torque(torque)] {
+        for drawing in [Drawing::Plan(map), Drawing::PressureAndGap(Box::new(twice)), Drawing::Cumulative(plot), Drawing::Torque(torque), Drawing::Section(Box::new(cut)), Drawing::Faces(Box::new(faces))] {
             // An error is as good as a figure; only a panic is not.
             let _ = svg(&drawing);
         }

@@ -38,7 +38,7 @@ struct Point {
 
 /// Draws the sweep.
 pub(super) fn draw(sweep: &TorqueSweep) -> Result<Sheet, FigureError> {
-    let upper_points = band(sweep, |point| point.source_to_sink)?;
+    let upper_points = with_minimum(sweep, &band(sweep, |point| point.source_to_sink)?)?;
     let lower_points = band(sweep, |point| point.contact)?;
     let stated = drawable(sweep.stated, "the stated torque")?;
     let best = match sweep.best {
@@ -132,7 +132,9 @@ pub(super) fn draw(sweep: &TorqueSweep) -> Result<Sheet, FigureError> {
         let mut outline: Vec<[f64; 2]> =
             points.iter().map(|p| at(frame, axis, *p, p.low)).collect();
         outline.extend(points.iter().rev().map(|p| at(frame, axis, *p, p.high)));
-        sheet.area(frame.area(&outline), band_colour());
+        if points.iter().any(|point| point.low < point.high) {
+            sheet.area(frame.area(&outline), band_colour());
+        }
     }
     if let (Some((limit, _)), Some(lines)) = (required, note) {
         draw_requirement(&mut sheet, upper, &upper_axis, (limit, &lines));
@@ -152,7 +154,7 @@ pub(super) fn draw(sweep: &TorqueSweep) -> Result<Sheet, FigureError> {
         }
     }
     if let Some(best) = best
-        && let Some(value) = between(&upper_points, best)
+        && let Some(value) = between(&upper_points, best, |point| point.nominal)
     {
         let place = [
             across(best),
@@ -175,6 +177,29 @@ pub(super) fn draw(sweep: &TorqueSweep) -> Result<Sheet, FigureError> {
         &key(sweep, barred.is_some_and(|b| b < right)),
     ) + 12.0;
     Ok(sheet)
+}
+
+/// The points with the minimum between them, its band as wide as that of its neighbours.
+fn with_minimum(sweep: &TorqueSweep, points: &[Point]) -> Result<Vec<Point>, FigureError> {
+    let mut all = points.to_vec();
+    let Some(found) = sweep.minimum else {
+        return Ok(all);
+    };
+    let torque = drawable(found.torque, "the minimum")?;
+    let value = drawable(found.source_to_sink, "the minimum")?;
+    let at = |of: fn(&Point) -> f64| between(points, torque, of);
+    let band = at(|p| p.low).zip(at(|p| p.high)).zip(at(|p| p.nominal));
+    let (low, high) = band.map_or((value, value), |((low, high), nominal)| {
+        (value + low - nominal, value + high - nominal)
+    });
+    all.push(Point {
+        torque,
+        low,
+        nominal: value,
+        high,
+    });
+    all.sort_by(|one, other| one.torque.total_cmp(&other.torque));
+    Ok(all)
 }
 
 fn nominal() -> Stroke {
@@ -329,17 +354,27 @@ fn draw_requirement(
     sheet.text([x, first + 14.0], lines[1].clone(), text);
 }
 
-/// The nominal value at a torque, linear between points.
-fn between(points: &[Point], torque: f64) -> Option<f64> {
+/// A value at a torque, linear between points.
+fn between(points: &[Point], torque: f64, of: fn(&Point) -> f64) -> Option<f64> {
     if let [only] = points {
-        return Some(only.nominal);
+        return Some(of(only));
     }
     let pair = points
         .windows(2)
         .find(|pair| pair[0].torque <= torque && torque <= pair[1].torque)?;
     let span = (pair[1].torque - pair[0].torque).max(f64::MIN_POSITIVE);
     let t = (torque - pair[0].torque) / span;
-    Some(pair[0].nominal + t * (pair[1].nominal - pair[0].nominal))
+    Some(of(&pair[0]) + t * (of(&pair[1]) - of(&pair[0])))
+}
+
+fn best_name(sweep: &TorqueSweep) -> &'static str {
+    if sweep.resists() {
+        "highest that strength allows"
+    } else if sweep.minimum.is_some() {
+        "minimum"
+    } else {
+        "lowest that strength allows"
+    }
 }
 
 fn key(sweep: &TorqueSweep, barred: bool) -> Vec<(Sample, String)> {
@@ -355,10 +390,7 @@ fn key(sweep: &TorqueSweep, barred: bool) -> Vec<(Sample, String)> {
     if let Some(best) = sweep.best {
         items.push((
             Sample::HollowDot(nominal().colour),
-            format!(
-                "lowest that strength allows, at {} N\u{a0}m",
-                axis::plain(best)
-            ),
+            format!("{}, at {} N\u{a0}m", best_name(sweep), axis::plain(best)),
         ));
     }
     if barred {

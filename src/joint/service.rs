@@ -19,7 +19,7 @@ use crate::{
 const ROOM: f64 = 293.15;
 
 /// Standard atmosphere, Pa.
-const ATMOSPHERE: f64 = 101_325.0;
+pub(super) const ATMOSPHERE: f64 = 101_325.0;
 
 /// Reads `[service]`, with the heat of the joint and what the cooled back of the last plate says
 /// of its temperature, which may stand in place of that of the service.

@@ -7,11 +7,13 @@ use crate::{
         TorqueSweep,
     },
     joint::{Limit, Plane, RequirementKind},
-    report::number::inverse,
+    report::{media::vacuum_over, number::inverse},
+    uncertainty::InMedium,
 };
 use serde_json::{Map, Value, json};
 
 mod pressure;
+mod temperatures;
 
 pub(super) use pressure::differences;
 
@@ -95,6 +97,7 @@ fn case(case: &CaseResult) -> Map<String, Value> {
         ("numerical_error", json!(case.numerical_error)),
         ("draw_error", json!(case.draw_error)),
         ("rise", rise(case)),
+        ("temperatures", temperatures::temperatures(case)),
         (
             "requirement",
             case.requirement.as_ref().map_or(Value::Null, requirement),
@@ -215,6 +218,21 @@ fn assumptions(assumptions: &[Assumption]) -> Value {
         .collect()
 }
 
+/// The same joint in several media.
+pub fn media(media: &[InMedium]) -> Value {
+    let row = |each: &InMedium| {
+        json!({
+            "medium": each.medium.word(),
+            "pressure": each.medium.pressure(),
+            "source_to_sink": { "resistance": band(&each.source_to_sink) },
+            "added_by_joint": { "resistance": band(&each.added_by_joint) },
+            "rise": each.rise.as_ref().map(band),
+            "vacuum_over_medium": vacuum_over(media, each),
+        })
+    };
+    media.iter().map(row).collect()
+}
+
 /// The rings of every bolt: radii in m, pressure in Pa, conductances in W/(m² K) and W/K.
 pub fn rings(tables: &[Vec<RingRow>]) -> Value {
     let row = |ring: &RingRow| {
@@ -260,6 +278,11 @@ pub fn torque(sweep: &TorqueSweep) -> Value {
         "stated": sweep.stated,
         "largest": sweep.largest.map(|(torque, limit)| json!({ "torque": torque, "limit": limit })),
         "best": sweep.best,
+        "minimum": sweep.minimum.map(|minimum| json!({
+            "torque": minimum.torque,
+            "source_to_sink": minimum.source_to_sink,
+            "added_by_joint": minimum.added_by_joint,
+        })),
         "required": sweep.required.map(|(resistance, bound)| {
             json!({ "resistance": resistance, "bound": bound_key(bound) })
         }),

@@ -31,18 +31,21 @@ pub struct Worse {
 /// In gas or thin paste the gap between the bolts grows with the force, so that the curve may have
 /// its lowest point inside the window. A joint that must resist is never worse for resisting more.
 pub fn worse(sweep: &TorqueSweep) -> Option<Worse> {
-    if matches!(sweep.required, Some((_, Limit::Least))) {
+    if sweep.resists() {
         return None;
     }
     let beyond = sweep.best?;
     let nominal = |point: &TorquePoint| point.source_to_sink.nominal;
-    let best = sweep.points.iter().find(|point| point.torque >= beyond)?;
+    let lowest = match sweep.minimum {
+        Some(minimum) => minimum.source_to_sink,
+        None => nominal(sweep.points.iter().find(|point| point.torque >= beyond)?),
+    };
     let worst = sweep
         .points
         .iter()
         .filter(|point| point.passes && point.torque > beyond)
         .max_by(|one, other| nominal(one).total_cmp(&nominal(other)))?;
-    let rise = nominal(worst) / nominal(best) - 1.0;
+    let rise = nominal(worst) / lowest - 1.0;
     (rise > WORSE).then_some(Worse {
         beyond,
         at: worst.torque,
@@ -53,9 +56,7 @@ pub fn worse(sweep: &TorqueSweep) -> Option<Worse> {
 /// The sweep as a table with the stated, the best and the largest torque marked.
 pub fn torque(sweep: &TorqueSweep) -> String {
     let stated = nearest(sweep, sweep.stated);
-    let best = sweep
-        .best
-        .and_then(|best| sweep.points.iter().position(|point| point.torque >= best));
+    let best = best_row(sweep);
     let rows: Vec<Vec<String>> = sweep
         .points
         .iter()
@@ -66,7 +67,11 @@ pub fn torque(sweep: &TorqueSweep) -> String {
                 marks.push("stated");
             }
             if Some(index) == best {
-                marks.push("best");
+                marks.push(if sweep.minimum.is_some() {
+                    "near best"
+                } else {
+                    "best"
+                });
             }
             if !point.passes {
                 marks.push("over");
@@ -134,6 +139,15 @@ pub fn torque(sweep: &TorqueSweep) -> String {
     text
 }
 
+/// The row of the best torque, or the one nearest to it where it lies between two.
+fn best_row(sweep: &TorqueSweep) -> Option<usize> {
+    let best = sweep.best?;
+    if sweep.minimum.is_some() {
+        return nearest(sweep, best);
+    }
+    sweep.points.iter().position(|point| point.torque >= best)
+}
+
 /// What the sweep says about the best torque; never one beyond strength.
 fn advice(sweep: &TorqueSweep, best: Option<usize>, stated: Option<usize>) -> String {
     if best.is_none() && sweep.gap_unknown() {
@@ -141,20 +155,27 @@ fn advice(sweep: &TorqueSweep, best: Option<usize>, stated: Option<usize>) -> St
                 be worse, and this field does not know the gap\n"
             .to_owned();
     }
-    let Some(index) = best else {
+    let (Some(index), Some(torque)) = (best, sweep.best) else {
         return "best     no torque of this range passes every strength limit\n".to_owned();
     };
-    let point = &sweep.points[index];
+    let there = sweep
+        .minimum
+        .map_or(sweep.points[index].source_to_sink.nominal, |minimum| {
+            minimum.source_to_sink
+        });
     let gain = stated.map_or_else(String::new, |stated| {
-        let there = sweep.points[stated].source_to_sink.nominal;
-        let gain = 1.0 - point.source_to_sink.nominal / there;
+        let gain = 1.0 - there / sweep.points[stated].source_to_sink.nominal;
         let side = if gain < 0.0 { "above" } else { "below" };
         format!(", {} {side} the stated torque", percent(gain.abs()))
     });
     let mut text = format!(
-        "best     {} N·m: lowest source to sink that strength allows here{gain}\n",
-        four(point.torque)
+        "best     {} N·m: {}{gain}\n",
+        four(torque),
+        praise(sweep, there)
     );
+    for line in remarks(sweep, index) {
+        let _ = writeln!(text, "         {line}");
+    }
     if let Some(Worse { beyond, at, rise }) = worse(sweep) {
         let _ = writeln!(
             text,
@@ -165,6 +186,36 @@ fn advice(sweep: &TorqueSweep, best: Option<usize>, stated: Option<usize>) -> St
         );
     }
     text
+}
+
+/// What makes the best torque the best.
+fn praise(sweep: &TorqueSweep, there: f64) -> String {
+    if sweep.resists() {
+        "highest source to sink that strength allows here".to_owned()
+    } else if sweep.minimum.is_some() {
+        format!("the minimum of source to sink, {} K/W", four(there))
+    } else {
+        "lowest source to sink that strength allows here".to_owned()
+    }
+}
+
+/// What must be known of the best torque before it is taken for one.
+fn remarks(sweep: &TorqueSweep, index: usize) -> Vec<&'static str> {
+    let mut lines = Vec::new();
+    if sweep.minimum.is_some() {
+        lines.push(
+            "found between the rows; below it the contact lacks force, beyond it the gap opens",
+        );
+    } else if index == 0 && sweep.points.len() > 1 {
+        lines.push(if sweep.resists() {
+            "it is the first torque swept: less resists more, and what the bolts must hold decides"
+        } else {
+            "it is the first torque swept: the minimum may lie below it; --from tries less"
+        });
+    } else if sweep.resists() {
+        lines.push("the requirement asks for at least so much resistance: more is better");
+    }
+    lines
 }
 
 fn row(point: &TorquePoint, marks: &str) -> Vec<String> {

@@ -5,9 +5,9 @@ use crate::{
         Assumption, Caution,
         registry::{Gravity, entry, gravity},
     },
-    estimate::{BoltResult, CaseResult, Estimate, RingRow},
+    estimate::{BoltResult, CaseResult, Estimate},
     report::{
-        number::{band, cut, four, optional, percent, plain, wrapped},
+        number::{band, cut, optional, percent, plain, wrapped},
         table::{Side, aligned},
     },
 };
@@ -15,7 +15,11 @@ use anstyle::{AnsiColor, Style};
 use std::fmt::Write;
 
 mod pressure;
+mod rings;
+mod temperatures;
 mod thermal;
+
+pub use rings::{ring_sum, rings};
 
 /// Widest line, characters.
 pub const WIDTH: usize = 100;
@@ -42,7 +46,7 @@ pub fn estimate_at(estimate: &Estimate, detail: Detail) -> String {
     if let Some(case) = estimate.cases.first() {
         parts.push(bolts(case, detail));
         parts.push(thermal::results(case));
-        parts.push(thermal::verdict(estimate, case));
+        parts.push(thermal::verdict(estimate, case) + &temperatures::told(estimate, case));
         if estimate.cases.len() > 1 {
             parts.push(thermal::cases(estimate));
         }
@@ -277,42 +281,6 @@ pub fn painted(report: &str) -> String {
             let _ = writeln!(text, "{line}");
         }
         opens = line.is_empty();
-    }
-    text
-}
-
-/// The rings of every bolt.
-pub fn rings(tables: &[Vec<RingRow>]) -> String {
-    let right = Side::Right;
-    let mut text = String::new();
-    for (index, rings) in tables.iter().enumerate() {
-        let rows: Vec<Vec<String>> = rings
-            .iter()
-            .map(|ring| {
-                vec![
-                    four(ring.radius[0] * 1e3),
-                    four(ring.radius[1] * 1e3),
-                    four(ring.area * 1e6),
-                    four(ring.pressure / 1e6),
-                    four(ring.conductance),
-                    four(ring.share),
-                    four(ring.cumulative),
-                ]
-            })
-            .collect();
-        let _ = writeln!(text, "\nrings around bolt {}", index + 1);
-        text.push_str(&aligned(
-            &[
-                ("from\nmm", right),
-                ("to\nmm", right),
-                ("area\nmm²", right),
-                ("pressure\nMPa", right),
-                ("local\nW/(m²·K)", right),
-                ("ring\nW/K", right),
-                ("sum\nW/K", right),
-            ],
-            &rows,
-        ));
     }
     text
 }

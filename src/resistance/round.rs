@@ -13,7 +13,7 @@ mod outcome;
 mod plate;
 
 pub use field::{Law, heat_under};
-pub use outcome::{Health, Heat, Place, Profile, Profiles};
+pub use outcome::{Health, Heat, Meridian, Place, Profile, Profiles};
 
 use join::{Join, Meeting};
 use mesh::{Density, Mesh};

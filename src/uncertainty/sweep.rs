@@ -5,7 +5,7 @@ use crate::{
     joint::{Joint, Limit, Plane, RequirementKind, Tightening},
 };
 
-use super::draws;
+use super::{draws, minimum::minimum};
 
 /// Which torques to try.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -70,22 +70,28 @@ pub fn sweep_along(chain: &Chain, options: &SweepOptions) -> Result<TorqueSweep,
         .map(|torque| point(chain, options, (case, torque)))
         .collect::<Result<Vec<TorquePoint>, Failure>>()?;
     let cautions = estimate::nominal(chain, &options.chain)?.cautions;
-    let best = points
-        .iter()
-        .filter(|point| point.passes)
-        .min_by(|one, other| {
-            let key = |point: &TorquePoint| point.source_to_sink.nominal;
-            key(one).total_cmp(&key(other))
-        })
-        .map(|point| point.torque);
+    let required = required(joint);
+    let minimum = match required {
+        Some((_, Limit::Least)) => None,
+        _ if chain.knows_the_gap() => {
+            let window = (points.as_slice(), largest.map(|(torque, _)| torque));
+            minimum(chain, (options.group, case), window)?
+        }
+        _ => None,
+    };
+    let best = match minimum {
+        Some(minimum) => Some(minimum.torque),
+        None => best_of(&points, required),
+    };
     let mut sweep = TorqueSweep {
         title: joint.title.clone(),
         group: estimate::group_label(group),
         stated,
         largest,
         best,
+        minimum,
         points,
-        required: required(joint),
+        required,
         case: joint.service.cases[case].name,
         cautions,
     };
@@ -94,6 +100,18 @@ pub fn sweep_along(chain: &Chain, options: &SweepOptions) -> Result<TorqueSweep,
         sweep.best = None;
     }
     Ok(sweep)
+}
+
+/// The swept torque of least resistance that strength allows; of most where the joint is to resist.
+fn best_of(points: &[TorquePoint], required: Option<(f64, Limit)>) -> Option<f64> {
+    let sign = match required {
+        Some((_, Limit::Least)) => -1.0,
+        _ => 1.0,
+    };
+    let key = |point: &TorquePoint| sign * point.source_to_sink.nominal;
+    let allowed = points.iter().filter(|point| point.passes);
+    let best = allowed.min_by(|one, other| key(one).total_cmp(&key(other)));
+    best.map(|point| point.torque)
 }
 
 /// The case in which the joint stands worst: of most resistance, or of least where the requirement

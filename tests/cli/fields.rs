@@ -171,7 +171,14 @@ fn a_solved_field_is_drawn_with_its_gap() {
     let written = names(&folder.path().join("figures"));
     assert_eq!(
         written,
-        ["conductance.svg", "cumulative.svg", "pressure_and_gap.svg"]
+        [
+            "conductance.svg",
+            "cumulative.svg",
+            "flux.svg",
+            "pressure_and_gap.svg",
+            "section.svg",
+            "temperature.svg"
+        ]
     );
     // Nothing is overwritten unasked.
     draw().code(2);
@@ -240,4 +247,167 @@ fn threads_change_no_digit_and_fillers_have_their_draws() {
         assert!(one == run("2", set), "{set}");
         assert!(one.contains("\"draw_error\": 0."), "{set}: {one}");
     }
+}
+
+/// One bolt in two discs, solved in radius and height.
+const ROUND: &str = r#"
+title = "Round pair"
+[service]
+medium = "vacuum"
+temperature = "20 °C"
+[[plate]]
+name = "warm"
+material = "Al 6061-T6"
+thickness = "6 mm"
+diameter = "50 mm"
+finish = { roughness = "Ra 0.8 µm" }
+[[plate]]
+name = "cold"
+material = "Al 6061-T6"
+thickness = "6 mm"
+diameter = "50 mm"
+finish = { roughness = "Ra 0.8 µm" }
+cooled = { film = "500 W/(m²·K)" }
+[fastener]
+thread = "M5"
+grade = "8.8"
+hole = "5.5 mm"
+bearing = "8.5 mm"
+engagement = { kind = "nut" }
+preload = "4 kN"
+at = ["0 mm", "0 mm"]
+"#;
+
+fn draw(folder: &tempfile::TempDir, file: &str) -> std::path::PathBuf {
+    within(folder)
+        .args(["draw", file, "--field", "elastic", "--resolution", "fast"])
+        .args(["--out", "figures"])
+        .assert()
+        .code(0);
+    folder.path().join("figures")
+}
+
+#[test]
+fn a_section_tells_the_heat_of_the_joint_or_per_watt() {
+    let folder = bench();
+    fs::write(folder.path().join("round.toml"), ROUND).expect("the joint can be written");
+    let figures = draw(&folder, "two.toml");
+    let read = |name: &str| fs::read_to_string(figures.join(name)).expect("a figure");
+    let [section, faces] = ["section.svg", "temperature.svg"].map(read);
+    for part in [
+        "upper on lower; temperature above",
+        "at 5\u{a0}W",
+        "at y = 12 mm",
+    ] {
+        assert!(section.contains(part), "{part}");
+    }
+    assert!(section.contains("between bolts 1 and 2: "));
+    assert!(faces.contains("face of upper, K") && faces.contains("face of lower, K"));
+    fs::remove_dir_all(&figures).expect("the test made it");
+    // Round plates are solved on another mesh and show the same; no heat is stated there.
+    let figures = draw(&folder, "round.toml");
+    let section = fs::read_to_string(figures.join("section.svg")).expect("a figure");
+    for part in [
+        "warm on cold",
+        "per watt",
+        "away from the bolt: ",
+        "K/W across",
+    ] {
+        assert!(section.contains(part), "{part}");
+    }
+}
+
+#[test]
+fn rings_of_solved_fields_add_up_to_the_contact_and_say_that_it_is_not_the_joint() {
+    let folder = bench();
+    fs::write(folder.path().join("round.toml"), ROUND).expect("the joint can be written");
+    for (file, bolts) in [("two.toml", 2), ("round.toml", 1)] {
+        let run = |more: &str| {
+            stdout(
+                &within(&folder)
+                    .args([
+                        "estimate",
+                        file,
+                        "--field",
+                        "elastic",
+                        "--resolution",
+                        "fast",
+                    ])
+                    .args(["--draws", "0", "--rings", more])
+                    .assert()
+                    .code(0),
+            )
+        };
+        let told = run("--brief");
+        assert!(told.contains("rings around bolt 1") && told.contains("hottest point at x"));
+        assert!(told.contains("contact only, never"), "{told}");
+        let object: serde_json::Value = serde_json::from_str(&run("--json")).expect("one object");
+        let tables = object["rings"].as_array().expect("tables");
+        assert_eq!(tables.len(), bolts);
+        let ends = tables.iter().filter_map(|table| table.as_array()?.last());
+        let sum: f64 = ends.filter_map(|ring| ring["cumulative"].as_f64()).sum();
+        let contact = object["results"]["contact"]["conductance"]["nominal"].as_f64();
+        let contact = contact.expect("a number");
+        // The rings are summed on finer samples than the heat's own grid: 0.1 % and 0.3 % apart.
+        assert!(
+            (sum / contact - 1.0).abs() < 0.01,
+            "{file}: {sum} {contact}"
+        );
+    }
+}
+
+#[test]
+fn media_are_told_side_by_side_and_an_unknown_one_is_refused() {
+    let folder = bench();
+    let run = |more: &[&str]| {
+        within(&folder)
+            .args([
+                "estimate",
+                "two.toml",
+                "--field",
+                "elastic",
+                "--resolution",
+                "fast",
+            ])
+            .args(["--draws", "0"])
+            .args(more)
+            .assert()
+    };
+    let told = stdout(&run(&["--media", "vacuum,air", "--media", "helium"]).code(0));
+    assert!(told.contains("times better than vacuum"), "{told}");
+    let object = stdout(&run(&["--media", "vacuum,air,helium", "--json"]).code(0));
+    let object: serde_json::Value = serde_json::from_str(&object).expect("one object");
+    let added = |row: usize| {
+        object["media"][row]["added_by_joint"]["resistance"]["nominal"]
+            .as_f64()
+            .expect("a number")
+    };
+    assert!(added(0) > added(1) && added(1) > added(2), "{object}");
+    // The joint itself stands in air, where both tell the same number.
+    let own = &object["results"]["added_by_joint"]["resistance"]["nominal"];
+    let off = added(1) / own.as_f64().expect("a number") - 1.0;
+    assert!(off.abs() < 1e-12, "{off}");
+    let refused = stderr(&run(&["--media", "vacuum,air,heluim"]).code(2));
+    assert!(refused.contains("did you mean `helium`"), "{refused}");
+}
+
+#[test]
+fn the_best_torque_of_a_joint_that_is_to_resist_is_that_of_most_resistance() {
+    let folder = bench();
+    let swept = stdout(
+        &within(&folder)
+            .args([
+                "torque", "two.toml", "--draws", "0", "--steps", "4", "--json",
+            ])
+            .args(["--set", "service.medium=vacuum"])
+            .args([
+                "--set",
+                "service.require={ resistance = \"0.1 K/W\", bound = \"least\" }",
+            ])
+            .assert()
+            .code(0),
+    );
+    let swept: serde_json::Value = serde_json::from_str(&swept).expect("one object");
+    // In vacuum less torque resists more.
+    assert_eq!(swept["best"], swept["points"][0]["torque"], "{swept}");
 }

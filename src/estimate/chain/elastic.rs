@@ -24,7 +24,8 @@ use crate::{
 use columns::Columns;
 use level::{Level, asked, coarser};
 use round::Round;
-use solver::{Factors, Solved, Solver};
+pub(super) use solver::Solved;
+use solver::{Factors, Solver};
 use spread::Spread;
 use variant::Variant;
 
@@ -161,6 +162,11 @@ impl ElasticModel {
     pub(super) fn pressed_edge(&self, chain: &Chain, case: usize) -> Option<PressedEdge> {
         let (_, solved) = self.closed(chain, case).ok()?;
         solved.pressed_edge(chain.joint())
+    }
+
+    /// Contact and heat of a case at nominal.
+    pub(super) fn of_case(&self, chain: &Chain, case: usize) -> Result<&dyn Solved, Failure> {
+        self.closed(chain, case).map(|(_, solved)| solved)
     }
 
     /// How the faces of the first case meet at a point.

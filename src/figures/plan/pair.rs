@@ -67,14 +67,20 @@ enum Arrangement {
 /// Draws the pair.
 pub(in crate::figures) fn draw(pair: &PlanPair) -> Result<Sheet, FigureError> {
     let maps = [&pair.pressure, &pair.gap];
-    let window = pair.pressure.window;
+    let told = format!("{}; {}", subtitle(maps[0]), subtitle(maps[1]));
+    twins(maps, &told)
+}
+
+/// Draws two maps of one window with what is told under the title of the first.
+pub(super) fn twins(maps: [&PlanMap; 2], told: &str) -> Result<Sheet, FigureError> {
+    let window = maps[0].window;
     let [wide, tall] = extent(window)?;
-    let mut edges = window.iter().zip(&pair.gap.window);
+    let mut edges = window.iter().zip(&maps[1].window);
     // Negated, so that an edge that is not a number counts as different.
     if !edges.all(|(one, other)| (one - other).abs() <= 1e-9 * wide.max(tall)) {
         return Err(FigureError::Shape("two maps of different windows"));
     }
-    let colours = [colour_axis(&pair.pressure)?, colour_axis(&pair.gap)?];
+    let colours = [colour_axis(maps[0])?, colour_axis(maps[1])?];
     let (arrangement, room) = if wide > STRIP * tall {
         (Arrangement::Above, ABOVE)
     } else {
@@ -98,8 +104,7 @@ pub(in crate::figures) fn draw(pair: &PlanPair) -> Result<Sheet, FigureError> {
     };
     let right = left + step[0] + panel + MARGIN.max(label / 2.0 + 4.0);
     let mut sheet = Sheet::new(right.max(360.0));
-    let told = format!("{}; {}", subtitle(maps[0]), subtitle(maps[1]));
-    let top = sheet.header(&pair.pressure.title, &told) + 4.0;
+    let top = sheet.header(&maps[0].title, told) + 4.0;
 
     let mut bottom = top;
     for (index, (map, colours)) in maps.into_iter().zip(&colours).enumerate() {

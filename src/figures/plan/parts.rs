@@ -28,7 +28,7 @@ pub(super) fn draw(sheet: &mut Sheet, view: &View, map: &PlanMap) {
         if detail.kind == DetailKind::CutOut {
             let area = view.frame.area(&detail.shape.edge(view));
             sheet.area(area, view.ground.unwrap_or(PAPER));
-        } else if map.ramp == Ramp::Umber {
+        } else if map.ramp != Ramp::Sea {
             shape(sheet, view, &detail.shape, halo(detail_stroke(detail.kind)));
         }
         shape(sheet, view, &detail.shape, detail_stroke(detail.kind));
@@ -40,8 +40,8 @@ pub(super) fn draw(sheet: &mut Sheet, view: &View, map: &PlanMap) {
         let points: Vec<[f64; 2]> = line.iter().map(|p| view.point(*p)).collect();
         sheet.line_within(view.frame, &points, CONTACT);
     }
-    if let Some(zone) = &map.heated {
-        if map.ramp == Ramp::Umber {
+    for zone in &map.heated {
+        if map.ramp != Ramp::Sea {
             shape(sheet, view, zone, halo(HEATED));
         }
         shape(sheet, view, zone, HEATED);
@@ -111,7 +111,7 @@ pub(super) fn key(map: &PlanMap, colours: &Axis, ground: Option<Colour>) -> Vec<
     if !map.contact.is_empty() || map.bolts.iter().any(|bolt| bolt.contact_radius.is_some()) {
         items.push((Sample::Ring(CONTACT), "edge of contact".into()));
     }
-    if map.heated.is_some() {
+    if !map.heated.is_empty() {
         items.push((Sample::Line(HEATED), "heated zone".into()));
     }
     items.extend(meaning(map, colours));
@@ -154,6 +154,8 @@ fn meaning(map: &PlanMap, colours: &Axis) -> Option<(Sample, String)> {
             match map.ramp {
                 Ramp::Sea => format!("no {}", map.quantity),
                 Ramp::Umber => "faces touch".into(),
+                // No temperature is nothing.
+                Ramp::Ember => return None,
             },
         ))
     } else if colours.spread == Spread::Logarithmic && map.values.iter().any(under) {

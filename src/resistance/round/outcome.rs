@@ -25,6 +25,8 @@ pub struct Heat {
     pub plate_mean: [f64; 2],
     /// Temperatures of the four faces; empty where no heat flows.
     pub profiles: Profiles,
+    /// Temperatures inside both plates; empty where no heat flows.
+    pub meridians: [Meridian; 2],
     /// How good the solution is.
     pub health: Health,
 }
@@ -54,6 +56,17 @@ pub struct Profiles {
     pub inner: [Profile; 2],
     /// Outer faces: where heat may enter, and the back.
     pub outer: [Profile; 2],
+}
+
+/// Temperatures of one plate over radius and height.
+#[derive(Clone, Debug, Default, PartialEq)]
+pub struct Meridian {
+    /// Radii of the grid lines, m, rising.
+    pub radii: Vec<f64>,
+    /// Heights above the interface, m, rising away from it.
+    pub heights: Vec<f64>,
+    /// For every radius the temperature at every height, K/W.
+    pub temperatures: Vec<Vec<f64>>,
 }
 
 /// What a solution must satisfy, measured on it.
@@ -139,6 +152,7 @@ impl Condensed {
             },
             plate_mean: [f64::INFINITY, f64::NAN],
             profiles: Profiles::default(),
+            meridians: [Meridian::default(), Meridian::default()],
             health: Health {
                 heat_balance: 0.0,
                 coarser_grid: 0.0,
@@ -183,6 +197,17 @@ impl Condensed {
             };
             heat.profiles.inner[plate] = profile(&solved.foot);
             heat.profiles.outer[plate] = profile(&solved.outer);
+            // Every other node of a face stands on a grid line, whose nodes are numbered upwards.
+            let lines = || solved.foot.iter().zip(&solved.outer).step_by(2);
+            heat.meridians[plate] = Meridian {
+                radii: lines().map(|(foot, _)| solved.at[*foot][0]).collect(),
+                heights: lines().next().map_or_else(Vec::new, |(foot, top)| {
+                    (*foot..=*top).map(|node| solved.at[node][1]).collect()
+                }),
+                temperatures: lines()
+                    .map(|(foot, top)| (*foot..=*top).map(|node| at(plate, node)).collect())
+                    .collect(),
+            };
         }
         heat.path.node_to_node = heat.plate_mean[0] - heat.plate_mean[1];
         heat.path.interface_drop = self.mean_drop(&fields.drop) / readings.heat;

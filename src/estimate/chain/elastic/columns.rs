@@ -5,6 +5,7 @@ mod edges;
 mod heat;
 mod problem;
 mod readings;
+mod temperatures;
 mod terminals;
 
 use std::sync::{Arc, OnceLock};

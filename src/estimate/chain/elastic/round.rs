@@ -2,6 +2,7 @@
 
 mod readings;
 mod shape;
+mod temperatures;
 
 use std::sync::{Arc, Mutex, PoisonError};
 
@@ -22,10 +23,7 @@ use crate::{
         elastic,
         round::{self, NotConverged, Solution},
     },
-    resistance::{
-        Path,
-        round::{self as heat, Condensed, Law},
-    },
+    resistance::round::{self as heat, Condensed, Law},
 };
 
 use shape::Shape;
@@ -53,8 +51,9 @@ struct InRound {
     contact: Arc<Solution>,
     force: f64,
     rings: Vec<RingRow>,
-    path: Path,
-    health: heat::Health,
+    heat: heat::Heat,
+    /// Radius, m, and flux across the faces, 1/m².
+    flux: Vec<(f64, f64)>,
 }
 
 impl Round {
@@ -101,8 +100,8 @@ impl Solver for Round {
             shape: self.shape,
             force,
             rings: readings::rings(&self.shape, (&contact, force), local),
-            path: heat.path,
-            health: heat.health,
+            flux: temperatures::flux(&heat, local),
+            heat,
             contact,
         }))
     }

@@ -4,7 +4,7 @@ use std::{fmt::Debug, sync::Arc};
 
 use crate::{
     estimate::{
-        ConeBeside, Failure, Flatness, Meeting, PressureResult, RingRow,
+        ConeBeside, FacePoint, Failure, Flatness, Meeting, PressureResult, RingRow, Temperatures,
         chain::{
             PressedEdge,
             conditions::Conditions,
@@ -12,7 +12,10 @@ use crate::{
         },
     },
     joint::Joint,
-    resistance::Path,
+    resistance::{
+        Path,
+        columns::{Across, Section},
+    },
 };
 
 /// What a departure does to the faces and plates, as factors.
@@ -67,7 +70,9 @@ pub(super) trait Solver: Debug + Send + Sync {
 }
 
 /// Contact and heat of a joint under one load.
-pub(super) trait Solved: Debug + Send + Sync {
+pub(in crate::estimate::chain) trait Solved:
+    Debug + Send + Sync
+{
     /// Resistances.
     fn path(&self) -> &Path;
 
@@ -95,6 +100,16 @@ pub(super) trait Solved: Debug + Send + Sync {
     /// Where the contact reaches an edge of plate or foot, holes not looked at; the place of the
     /// highest pressure there.
     fn pressed_edge(&self, joint: &Joint) -> Option<PressedEdge>;
+
+    /// Temperatures at a glance.
+    fn temperatures(&self) -> Temperatures;
+
+    /// Both faying faces at points in joint coordinates; none off the faces.
+    fn face_points(&self, points: &[[f64; 2]]) -> Vec<Option<FacePoint>>;
+
+    /// Temperatures on a line through the stack, per watt above the mean sink surface, warm side
+    /// first; none where the line misses it.
+    fn section(&self, across: Across) -> Option<Vec<Section>>;
 
     /// Error of the heat that a coarser level does not tell, relative to source to sink.
     fn heat_error(&self) -> f64;

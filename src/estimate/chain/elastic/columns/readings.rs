@@ -2,11 +2,12 @@
 
 use crate::{
     estimate::{
-        ConeBeside, Flatness, Meeting, PressureResult, RingRow, SolvedField, SolverHealth,
+        ConeBeside, FacePoint, Flatness, Meeting, PressureResult, RingRow, SolvedField,
+        SolverHealth, Temperatures,
         chain::{
             PressedEdge,
             elastic::{
-                columns::{OnColumns, edges::pressed_edge},
+                columns::{OnColumns, edges::pressed_edge, temperatures},
                 rings::{Sum, edges, rows},
                 solver::Solved,
             },
@@ -15,7 +16,10 @@ use crate::{
     joint::Joint,
     numerics::columns::{Plan, Region},
     pressure::elastic::{FaceField, Field},
-    resistance::Path,
+    resistance::{
+        Path,
+        columns::{Across, Section},
+    },
 };
 
 /// Rise of the energy that is rounding and no rise.
@@ -125,6 +129,18 @@ impl Solved for OnColumns {
     fn footprint(&self) -> f64 {
         let face = &self.field.faces[0];
         face.weight.iter().chain(&face.open_weight).sum()
+    }
+
+    fn temperatures(&self) -> Temperatures {
+        temperatures::at_a_glance(&self.heat)
+    }
+
+    fn face_points(&self, points: &[[f64; 2]]) -> Vec<Option<FacePoint>> {
+        temperatures::face_points((&self.field, &self.heat), points)
+    }
+
+    fn section(&self, across: Across) -> Option<Vec<Section>> {
+        temperatures::section(&self.heat, across)
     }
 
     /// Every sample of the faces counts to its nearest bolt.

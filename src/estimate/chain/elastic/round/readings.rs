@@ -4,12 +4,13 @@ use std::f64::consts::PI;
 
 use crate::{
     estimate::{
-        ConeBeside, Flatness, Meeting, PressureResult, RingRow, SolvedField, SolverHealth,
+        ConeBeside, FacePoint, Flatness, Meeting, PressureResult, RingRow, SolvedField,
+        SolverHealth, Temperatures,
         chain::{
             PressedEdge,
             elastic::{
                 rings::{Sum, edges, rows},
-                round::{InRound, shape::Shape},
+                round::{InRound, shape::Shape, temperatures},
                 solver::Solved,
             },
         },
@@ -17,12 +18,15 @@ use crate::{
     joint::Joint,
     numerics::elements::edge_points,
     pressure::round::Solution,
-    resistance::Path,
+    resistance::{
+        Path,
+        columns::{Across, Section},
+    },
 };
 
 impl Solved for InRound {
     fn path(&self) -> &Path {
-        &self.path
+        &self.heat.path
     }
 
     fn mean_pressure(&self) -> f64 {
@@ -54,6 +58,18 @@ impl Solved for InRound {
         self.rings.clone()
     }
 
+    fn temperatures(&self) -> Temperatures {
+        temperatures::at_a_glance(&self.heat, &self.shape)
+    }
+
+    fn face_points(&self, points: &[[f64; 2]]) -> Vec<Option<FacePoint>> {
+        temperatures::face_points((&self.heat, &self.flux), &self.shape, points)
+    }
+
+    fn section(&self, across: Across) -> Option<Vec<Section>> {
+        temperatures::section(&self.heat, &self.shape, across)
+    }
+
     fn pressure(&self, flatness: Flatness, cone: Option<ConeBeside>) -> PressureResult {
         let contact = &self.contact;
         PressureResult {
@@ -75,7 +91,7 @@ impl Solved for InRound {
                     complementarity: breach(contact),
                     energy_fell: None,
                     residual: None,
-                    heat_balance: self.health.heat_balance,
+                    heat_balance: self.heat.health.heat_balance,
                 },
             }),
         }
@@ -83,7 +99,7 @@ impl Solved for InRound {
 
     /// A level moves the grid of the contact alone; the heat holds itself against twice the spacing.
     fn heat_error(&self) -> f64 {
-        self.health.coarser_grid.abs()
+        self.heat.health.coarser_grid.abs()
     }
 
     /// Contact that fills the plates ends at their rim.
