@@ -9,7 +9,7 @@ mod joints;
 use std::time::Instant;
 
 use joints::{Plates, case_i, case_ii, crossings};
-use ringsum::pressure::elastic::{Field, Fineness, Through, size, solve};
+use ringsum::pressure::elastic::{Field, Fineness, size, solve};
 
 const RUNS: usize = 3;
 
@@ -67,7 +67,8 @@ fn main() {
     }
 }
 
-/// One plate pair on finer and finer even grids, one thread: time and memory against unknowns.
+/// More and more bolts of one pitch on larger and larger plates, all alike, one thread: time and
+/// memory against unknowns.
 fn growth() {
     println!(
         "{:>8} {:>5} {:>4} {:>8} {:>9}",
@@ -78,14 +79,12 @@ fn growth() {
         .build()
         .expect("a thread can be started");
     let mut times = Vec::new();
-    for widest in [1.9e-3, 1.4e-3, 1.0e-3, 0.7e-3, 0.48e-3] {
+    for bolts in [2, 3, 4, 6, 8] {
+        let lines: Vec<f64> = (0..bolts).map(|k| 0.01 + 0.03 * f64::from(k)).collect();
+        let side = 0.02 + 0.03 * f64::from(bolts - 1);
         let plates = Plates {
-            widest: Some(widest),
-            through: Some(Through {
-                elements: 1,
-                degree: 3,
-            }),
-            ..case_i(Fineness::Coarse)
+            fineness: Fineness::Normal,
+            ..Plates::pair([side; 2], [0.005; 2], crossings(&lines, &lines))
         };
         let (seconds, field) = (0..RUNS)
             .map(|_| {

@@ -26,8 +26,6 @@ pub struct Plates {
     pub thread: Option<f64>,
     pub through: Option<Through>,
     pub fineness: Fineness,
-    /// Widest distance between lines; none leaves it to the fineness.
-    pub widest: Option<f64>,
     pub most_bytes: u64,
 }
 
@@ -50,7 +48,6 @@ impl Plates {
             thread: None,
             through: None,
             fineness: Fineness::Fast,
-            widest: None,
             most_bytes: 1_000_000_000,
         }
     }
@@ -66,16 +63,6 @@ impl Plates {
         } else {
             bow * (1.0 - square / corner)
         }
-    }
-
-    /// Lines asked for by the widest distance.
-    fn stops(&self, axis: usize) -> Vec<f64> {
-        let [low, high] = self.bounds[0][axis];
-        let cells = self
-            .widest
-            .map_or(1, |widest| ((high - low) / widest).ceil() as usize);
-        let step = (high - low) / cells as f64;
-        (1..cells).map(|line| low + step * line as f64).collect()
     }
 
     /// Calls `with` with the problem.
@@ -128,7 +115,7 @@ impl Plates {
             bodies: covers.enumerate().map(body).collect(),
             interfaces: vec![interface; self.bounds.len() - 1],
             bolts: bolts.collect(),
-            stops: [0, 1].map(|axis| self.stops(axis)),
+            stops: [Vec::new(), Vec::new()],
             head: self.head,
             fineness: self.fineness,
             most_bytes: self.most_bytes,
