@@ -29,6 +29,8 @@ mod sag;
 mod schema;
 mod seats;
 mod service;
+mod stack;
+mod stacking;
 mod syntax;
 mod tightening;
 mod tree;
@@ -211,20 +213,20 @@ fn assembled(file: &Record, tables: &mut Tables<'_>, collector: &mut Collector) 
     let plates = plates::read(file, &own, tables, collector);
     let cooled = plates
         .as_ref()
-        .and_then(|[_, lower]| lower.record.record("cooled"));
+        .and_then(|plates| plates.last()?.record.record("cooled"));
     let service = service::read(file, cooled, collector);
     let temperature = service
         .as_ref()
         .and_then(|service| service.cases.first())
         .map(|case| case.temperature);
-    let filler = filler::read(file, collector);
+    let fillers = filler::read(file, plates.as_deref(), collector);
     let measured = filler::measured(file, temperature, collector);
     let Some(plates) = plates else {
         fasteners::read_alone(file, collector);
         return None;
     };
     let source = plates::source(&plates[0], collector);
-    let sink = plates::sink(&plates[1], collector);
+    let sink = plates::sink(&plates[plates.len() - 1], collector);
     let contact = contact::read(file, &plates, collector);
     let fasteners = fasteners::read(file, &plates, collector);
     let losses = contact::losses(file, collector);
@@ -240,7 +242,7 @@ fn assembled(file: &Record, tables: &mut Tables<'_>, collector: &mut Collector) 
         sink: sink?,
         fasteners: fasteners?,
         contact: contact?,
-        filler: filler?,
+        fillers: fillers?,
         measured: measured?,
         losses: losses?,
         assumptions: Vec::new(),

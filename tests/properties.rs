@@ -184,7 +184,7 @@ fn best_torque_is_the_last_that_strength_allows() {
 fn physics_does_not_know_which_units_it_is_in() {
     const MM: f64 = 1e3;
     let mut metre = converter_box();
-    metre.contact.emissivity = [1e-12; 2];
+    metre.contact.emissivity = vec![[1e-12; 2]];
     let millimetre = in_millimetres(&metre, MM);
     let [metre, millimetre] = [state(&metre), state(&millimetre)];
     let ratio = |one: f64, other: f64| (one / other - 1.0).abs();

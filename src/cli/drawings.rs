@@ -131,7 +131,7 @@ fn bolts(joint: &Joint, nominal: &Estimate, field: &FieldMap) -> Vec<PlanBolt> {
         .enumerate()
         .map(|(index, (group, at))| PlanBolt {
             at,
-            hole_radius: group.hole_radius[0].max(group.hole_radius[1]),
+            hole_radius: group.widest_hole(),
             head_radius: group.head_seat.outer_radius,
             contact_radius: results
                 .get(index)
@@ -220,7 +220,7 @@ fn marks(joint: &Joint, nominal: &Estimate) -> Vec<RadiusMark> {
         radius,
     };
     let mut marks = vec![
-        mark("hole", group.hole_radius[0].max(group.hole_radius[1])),
+        mark("hole", group.widest_hole()),
         mark("bearing", group.head_seat.outer_radius),
     ];
     let results = nominal.cases.first().map_or(&[][..], |case| &case.bolts);

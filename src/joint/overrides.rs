@@ -7,7 +7,7 @@ use crate::{
     joint::{
         collector::{Collector, Wording, fault},
         fields::{Kind, SPREAD_KEYS, Section, listed},
-        sections::{FILE, default_name},
+        sections::{FILE, default_name, own_name},
         tree::{Form, Key, Node, Span, short},
     },
 };
@@ -147,6 +147,10 @@ fn set_in(node: &mut Node, section: &'static Section, steps: &[Step], value: Wri
         ));
     }
     match (field.kind, rest) {
+        (Kind::List(inner), []) if inner.shorthand.is_some() => {
+            *slot(node, section, step)? = value.node(Kind::Table(inner));
+            Ok(())
+        }
         (Kind::List(inner), rest) => {
             let list = slot(node, section, step)?;
             let (element, rest) = element(list, inner, step, rest)?;
@@ -281,7 +285,10 @@ fn element<'n, 's>(
     step: &Step,
     rest: &'s [Step],
 ) -> Result<(&'n mut Node, &'s [Step]), Box<Fault>> {
-    if let Form::Table(_) = list.form {
+    let made = section.shorthand.is_some()
+        && !matches!(&list.form, Form::List(nodes) if !nodes.is_empty());
+    if made || matches!(list.form, Form::Table(_)) {
+        // A table that may stand alone is made when it is absent, and opened when it is a plain value.
         let only = list.clone();
         list.form = Form::List(vec![only]);
     }
@@ -305,8 +312,8 @@ fn element<'n, 's>(
         .iter()
         .enumerate()
         .filter_map(|(place, node)| {
-            let default = default_name(section, place);
-            node.text_of("name").or(default).map(str::to_owned)
+            let default = default_name(section, (place, count));
+            own_name(node, section).or(default).map(str::to_owned)
         })
         .collect();
     if let Some((name, after)) = rest.split_first()

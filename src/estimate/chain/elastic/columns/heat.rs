@@ -81,10 +81,13 @@ impl Plates {
     pub(super) fn solve(
         &self,
         conductances: &Conductances,
-        conductivity: [f64; 2],
+        conductivity: &[f64],
         shanks: &[f64],
     ) -> Result<(Heat, Path), resistance::Failure> {
-        let conductivity = conductivity.map(Conductivity::isotropic);
+        let conductivity: Vec<Conductivity> = conductivity
+            .iter()
+            .map(|plate| Conductivity::isotropic(*plate))
+            .collect();
         let terminals = self.terminals(shanks);
         // Each load starts afresh, so that the order of the threads moves no digit.
         let mut conduction = Conduction::new(&self.stack, &terminals, &conductivity)?;
@@ -144,18 +147,15 @@ pub(super) fn conductances(
     order: Order,
     (conditions, factors): (&Conditions, &Factors),
 ) -> Conductances {
-    let highest = field
-        .faces
-        .iter()
-        .flat_map(|face| face.pressure.iter().copied())
-        .fold(0.0, f64::max);
-    let touching = conditions.faces.over_many_points(highest);
-    let local = &conditions.faces.local;
-    let parted = |gap: f64| factors.parted * local.parted(gap);
     let mut found: Conductances = field
         .faces
         .iter()
-        .map(|face| {
+        .enumerate()
+        .map(|(index, face)| {
+            let laws = &conditions.faces[order.plate(index, field.faces.len())];
+            let highest = face.pressure.iter().copied().fold(0.0, f64::max);
+            let touching = laws.over_many_points(highest);
+            let parted = |gap: f64| factors.parted * laws.local.parted(gap);
             let columns = face.pressure.iter().zip(&face.gap).zip(&face.weight);
             let own = columns
                 .map(|((pressure, gap), weight)| {
@@ -272,7 +272,7 @@ fn bolts(joint: &Joint) -> Vec<Bolt> {
             let head = ring(fastener.head_seat);
             let nut = fastener.nut_seat.map_or(head, ring);
             let below = usize::from(fastener.head_plate == 0);
-            let wall = fastener.hole_radius[below].max(0.5 * fastener.thread.diameter);
+            let wall = fastener.outer_holes()[below].max(0.5 * fastener.thread.diameter);
             let wall = [0.0, WALL * wall];
             let (above, seat) = match (fastener.engagement, below) {
                 (Engagement::Nut, 1) => (head, Seat::Nut { annulus: nut }),

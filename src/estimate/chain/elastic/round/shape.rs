@@ -45,7 +45,7 @@ impl Shape {
         };
         let near = |a: f64, b: f64| (a - b).abs() <= ROUNDING * radius;
         let centred = |point: [f64; 2]| near(point[0], at[0]) && near(point[1], at[1]);
-        let [hole, far_hole] = fastener.hole_radius;
+        let [hole, far_hole] = fastener.outer_holes();
         let head = fastener.head_seat;
         let nut = fastener.nut_seat.unwrap_or(head);
         let seated = matches!(fastener.engagement, Engagement::Nut)
@@ -55,10 +55,7 @@ impl Shape {
                 to_the_hole && hole < seat.outer_radius && seat.outer_radius <= *radius
             });
         let plain = |plate: &Plate| {
-            plate.ribs.is_empty()
-                && plate.cutouts.is_empty()
-                && plate.feet.is_none()
-                && plate.loose_flatness() <= 0.0
+            plate.ribs.is_empty() && plate.cutouts.is_empty() && plate.feet.is_none()
         };
         let round = near(*radius, *other)
             && near(hole, far_hole)
@@ -66,7 +63,8 @@ impl Shape {
             && centred(second.origin);
         let bare = joint.is_flat()
             && joint.contact.compliance == Compliance::Hard
-            && joint.filler.as_ref().and_then(Filler::stiffness).is_none();
+            && joint.filler(0).and_then(Filler::stiffness).is_none()
+            && joint.loose_flatness(0) <= 0.0;
         let patch = match joint.source.zone {
             Zone::Face => Patch::Face,
             Zone::Disc { centre, radius } if centred(centre) && radius > hole => {
