@@ -31,19 +31,20 @@ pub fn of_joint(
         details: joint.plates.iter().flat_map(details).collect(),
         ..map
     };
-    let pressure = match PlanPair::of(&joint.title, field) {
+    let title = title(joint);
+    let pressure = match PlanPair::of(&title, field) {
         Some(pair) => (
             PRESSURE_AND_GAP,
             Drawing::PressureAndGap(Box::new(pair.furnished(furnish))),
         ),
         None => (
             PRESSURE,
-            Drawing::Plan(furnish(PlanMap::pressure(&joint.title, field))),
+            Drawing::Plan(furnish(PlanMap::pressure(&title, field))),
         ),
     };
-    let conductance = Drawing::Plan(furnish(PlanMap::conductance(&joint.title, field)));
+    let conductance = Drawing::Plan(furnish(PlanMap::conductance(&title, field)));
     let cumulative = Drawing::Cumulative(CumulativePlot {
-        title: joint.title.clone(),
+        title,
         curves: curves(rings),
         marks: marks(joint, nominal),
     });
@@ -52,6 +53,15 @@ pub fn of_joint(
         (CONDUCTANCE, conductance),
         (CUMULATIVE, cumulative),
     ]
+}
+
+/// The title of the joint; of a stack with the interface that is drawn, the first.
+fn title(joint: &Joint) -> String {
+    if joint.interfaces() > 1 {
+        format!("{}: {}", joint.title, joint.interface_name(0))
+    } else {
+        joint.title.clone()
+    }
 }
 
 fn outline(plate: &Plate) -> PlanOutline {

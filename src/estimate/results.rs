@@ -122,6 +122,11 @@ pub struct InterfaceResult {
 }
 
 impl InterfaceResult {
+    /// The plates in words: `box and shim`.
+    pub fn between(&self) -> String {
+        self.plates.join(" and ")
+    }
+
     /// The one interface of two plates, as path and pressure tell of it.
     pub(crate) fn only(joint: &Joint, path: &Path, pressure: &PressureResult) -> Self {
         Self {
