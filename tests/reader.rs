@@ -6,6 +6,8 @@ mod advice;
 mod fillers;
 #[path = "reader/plates.rs"]
 mod plates;
+#[path = "reader/stacks.rs"]
+mod stacks;
 
 use std::{fmt::Write, fs, path::PathBuf, time::Instant};
 

@@ -47,17 +47,15 @@ fn file(sheets: &[Sheet], bolt: &str, rest: &str) -> String {
     )
 }
 
-/// Layers of one area resistance whatever the pressure, which do not spread it; no scatter unless
-/// stated.
+/// A layer of one area resistance whatever the pressure, so soft that it is pressed all over; no
+/// scatter unless stated.
 fn layer(between: [&str; 2], resistance: f64, scatter: &str) -> String {
-    let points =
-        ["0 Pa", "1 GPa"].map(|pressure| format!("[\"{pressure}\", \"{resistance} m²·K/W\"]"));
+    let conductivity = 1e-3 / resistance;
     format!(
-        "[[filler]]\nname = \"test layer\"\ntable = [{}]\nscatter = \"{scatter}\"\n\
+        "[[filler]]\nname = \"test layer\"\nmodel = \"layer\"\nthickness = \"1 mm\"\n\
+         conductivity = \"{conductivity} W/(m·K)\"\nmodulus = \"5 MPa\"\nscatter = \"{scatter}\"\n\
          between = [\"{}\", \"{}\"]\n",
-        points.join(", "),
-        between[0],
-        between[1]
+        between[0], between[1]
     )
 }
 
@@ -173,10 +171,11 @@ fn a_stack_upside_down_is_the_same_stack() {
         let upright = file(&upright, thread, &foil(["panel", "back"]));
         let turned = turned.replacen("from = ", &format!("{thread}from = "), 1);
         let [one, other] = [upright, turned].map(|text| case(&read(&text)));
-        // The same equations in another order; the linear solutions leave 1e-7 of their loads.
+        // The same equations in another order; what the linear solutions leave of their loads, 1e-7, moves
+        // the edge of contact a little.
         let near = |one: f64, other: f64, what: &str| {
             assert!(
-                (one / other - 1.0).abs() < 1e-5,
+                (one / other - 1.0).abs() < 1e-4,
                 "{thread}{what}: {one} {other}"
             );
         };
@@ -202,11 +201,11 @@ fn a_stack_upside_down_is_the_same_stack() {
 #[test]
 fn a_thin_shim_presses_as_if_it_were_not_there() {
     let pair = [("base", 160.0, 4.0, ""), ("panel", 160.0, 4.0, "")];
-    let stack = [pair[0], ("shim", 160.0, 0.05, ""), pair[1]];
+    let stack = [pair[0], ("shim", 160.0, 0.1, ""), pair[1]];
     let [pair, stack] = [file(&pair, "", ""), file(&stack, "", "")].map(|text| case(&read(&text)));
     let alone = &pair.interfaces[0];
     for interface in &stack.interfaces {
-        // The shim is 1/80 of a plate thick, and the pressure spreads as far more.
+        // The shim is 1/40 of a plate thick, and the pressure spreads as far more.
         let near = |found: f64, alone: f64, what: &str| {
             let off = found / alone - 1.0;
             assert!(off.abs() < 0.02, "{what}: {off:+.4}");
