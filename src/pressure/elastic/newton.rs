@@ -23,6 +23,10 @@ pub(super) enum Start<'a> {
 /// Steps after which the contact counts as not found; a thin plate on a soft layer took more than 40,
 /// the energy falling in each.
 const MOST_STEPS: usize = 100;
+/// Steps after which columns of stuck faces that come and go are held.
+const PATIENCE: usize = 40;
+/// How often a column may leave then.
+const LEAVES: u8 = 2;
 /// Iterations of one linear solution after which it counts as stalled; a sheet of a twentieth of a
 /// millimetre between plates took more than 400.
 const MOST_ITERATIONS: usize = 1500;
@@ -52,6 +56,8 @@ struct Search<'a> {
     energy: f64,
     worst_rise: f64,
     shortened: usize,
+    /// How often every column has left the set since patience ended.
+    left: Vec<Vec<u8>>,
 }
 
 pub(super) fn solve(
@@ -87,6 +93,7 @@ pub(super) fn solve(
         energy: f64::INFINITY,
         worst_rise: 0.0,
         shortened: 0,
+        left: Vec::new(),
     };
     let (steps, residual) = search.run()?;
     search.field(mesh, steps, residual)
@@ -205,7 +212,10 @@ impl Search<'_> {
             .map_err(stalled)?;
             self.iterations += solved.iterations;
             self.descend(&before);
-            let sets = self.touching();
+            let mut sets = self.touching();
+            if step > PATIENCE {
+                self.hold(&mut sets);
+            }
             changed = count_changes(&self.active, &sets);
             self.problem.tell(Stage::Contact, step, solved.residual);
             if changed == 0 && tolerance <= LAST {
@@ -259,6 +269,30 @@ impl Search<'_> {
                     .collect()
             })
             .collect()
+    }
+
+    /// Holds columns of stuck faces that keep leaving the set.
+    ///
+    /// A column at the edge of contact may slide open when it sticks and close when it slides: it has
+    /// no state of its own, and no energy decides. Held, it pulls by next to nothing, which the
+    /// balance of forces and the complementarity of the field tell.
+    fn hold(&mut self, sets: &mut [Vec<bool>]) {
+        let stuck = |index: usize| {
+            let interface = self.problem.interfaces.get(index);
+            interface.is_some_and(|one| one.faces == Faces::Stuck)
+        };
+        if self.left.is_empty() {
+            self.left = sets.iter().map(|set| vec![0; set.len()]).collect();
+        }
+        for index in (0..sets.len()).filter(|index| stuck(*index)) {
+            let columns = sets[index].iter_mut().zip(&self.active[index]);
+            for ((touches, touched), left) in columns.zip(&mut self.left[index]) {
+                if *touched && !*touches {
+                    *left = left.saturating_add(1);
+                    *touches = *left > LEAVES;
+                }
+            }
+        }
     }
 
     fn take(&mut self, sets: Vec<Vec<bool>>, changed: usize) -> Result<(), Failure> {
