@@ -29,7 +29,7 @@ type Sheet<'a> = (&'a str, f64, f64, &'a str);
 
 /// The parts of a file of such plates, warm first; two M4 of known force through all of them.
 fn file(sheets: &[Sheet], bolt: &str, rest: &str) -> String {
-    let plates: String = sheets
+    let plates: Vec<String> = sheets
         .iter()
         .map(|(name, conductivity, thickness, lines)| {
             format!(
@@ -40,6 +40,7 @@ fn file(sheets: &[Sheet], bolt: &str, rest: &str) -> String {
             )
         })
         .collect();
+    let plates = plates.concat();
     format!(
         "[service]\nmedium = \"vacuum\"\n{plates}[fastener]\nthread = \"M4\"\ngrade = \"8.8\"\n\
          bearing = \"8 mm\"\nhole = \"4.5 mm\"\npreload = \"3 kN\"\nshank_path = false\n{bolt}\
@@ -81,8 +82,8 @@ fn walled(scatter: [&str; 2]) -> String {
     file(&SHEETS, "", &(first + &second))
 }
 
-/// R = Σ t/(k A) + Σ R″/A, the composite wall with contact resistances (Incropera & DeWitt, section
-/// 3.1, from memory): flux goes straight through where nothing spreads it.
+/// R = Σ t/(k A) + Σ R″/A, the composite wall with contact resistances (Incropera, section 3.1,
+/// from memory): flux goes straight through where nothing spreads it.
 #[test]
 fn even_layers_make_a_composite_wall() {
     let joint = read(&walled(["0 %", "0 %"]));

@@ -110,7 +110,7 @@ impl Gauge {
             let own = plates
                 .enumerate()
                 .filter(|(at, _)| variable(*at, last) == which);
-            weighted(own.map(|(_, (now, nominal))| (ratio(*now, *nominal), 1.0)))
+            weighted(&own.map(|(_, (now, nominal))| (ratio(*now, *nominal), 1.0)))
         };
         [
             if force > 0.0 {
@@ -118,11 +118,11 @@ impl Gauge {
             } else {
                 f64::NEG_INFINITY
             },
-            weighted(faces().map(|(faces, gauge)| {
+            weighted(&faces().map(|(faces, gauge)| {
                 let now = faces.conductance(gauge.met.pressure);
                 (ratio(now, gauge.touching), gauge.met.shares[0])
             })),
-            weighted(faces().map(|(faces, gauge)| {
+            weighted(&faces().map(|(faces, gauge)| {
                 let now = faces.local.parted(gauge.met.gap);
                 (ratio(now, gauge.parted), gauge.met.shares[1])
             })),
@@ -134,7 +134,7 @@ impl Gauge {
 }
 
 /// Weighted mean; a plain one where no weight is above zero, and 0 of nothing.
-fn weighted(values: impl Iterator<Item = (f64, f64)> + Clone) -> f64 {
+fn weighted(values: &(impl Iterator<Item = (f64, f64)> + Clone)) -> f64 {
     let mut alone = values.clone();
     match (alone.next(), alone.next()) {
         (None, _) => return 0.0,
