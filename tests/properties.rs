@@ -264,7 +264,10 @@ fn in_millimetres(joint: &Joint, mm: f64) -> Joint {
             seat.inner_radius *= mm;
             seat.outer_radius *= mm;
         }
-        group.hole_radius.iter_mut().for_each(|radius| *radius *= mm);
+        group
+            .hole_radius
+            .iter_mut()
+            .for_each(|radius| *radius *= mm);
         group.places.iter_mut().for_each(point);
         group.grade.youngs_modulus /= mm * mm;
         assert!(matches!(group.engagement, Engagement::Nut));

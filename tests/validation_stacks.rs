@@ -191,7 +191,11 @@ fn a_stack_upside_down_is_the_same_stack() {
             near(one.drop, other.drop, "drop");
             near(one.contact_area, other.contact_area, "area");
             let [gap, turned] = [one, other].map(|each| each.gap_max.unwrap_or(f64::NAN));
-            near(gap, turned, "gap");
+            // A tenth of a micrometre is left of displacements of micrometres.
+            assert!(
+                (gap / turned - 1.0).abs() < 1e-3,
+                "{thread}: {gap} {turned}"
+            );
         }
         // The faces differ, so that a mix-up shows.
         assert!((one.interfaces[0].contact / one.interfaces[1].contact - 1.0).abs() > 0.1);
