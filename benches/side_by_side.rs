@@ -44,7 +44,7 @@ fn main() {
         .map(|index| 1000.0 + 5000.0 * index as f64 / EVALUATIONS as f64)
         .collect();
 
-    let local = &state.conditions.faces.local;
+    let local = &state.conditions.faces[0].local;
     let highest = 1.1 * cone.pressure(rings.radius[0], forces[EVALUATIONS - 1]);
     let curve = Curve::up_to(local, highest).expect("the law of the demo is smooth");
     let sum = |force: f64| ring_sum(&rings, &cone, &curve, force);

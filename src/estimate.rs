@@ -63,14 +63,16 @@ pub struct Realisation {
     pub preload: f64,
     /// Share of the guide losses that acts when the file asks for none, 0 to 1.
     pub loss: f64,
-    /// Roughness of the warm and the cold face, place.
+    /// Roughness of the warm and the cold faces, place.
     pub roughness: [f64; 2],
-    /// Slope of the warm and the cold face, standard deviations.
+    /// Slope of the warm and the cold faces, standard deviations.
     pub slope: [f64; 2],
-    /// Hardness of both faces, place.
+    /// Hardness of all faces, place.
     pub hardness: f64,
-    /// Conductivity of the warm and the cold plate, place.
+    /// Conductivity of the first and the last plate, place.
     pub conductivity: [f64; 2],
+    /// Conductivity of the plates between them, place; one for all.
+    pub conductivity_between: f64,
     /// Law of the solid spots or own measurements, standard deviations.
     pub law: f64,
     /// Filler resistance, standard deviations.
@@ -81,6 +83,17 @@ pub struct Realisation {
     pub field: f64,
     /// Out-of-flatness that is stated as a height alone, place: −1 convex, +1 concave.
     pub flatness: f64,
+}
+
+impl Realisation {
+    /// Place of the conductivity of a plate of a joint.
+    pub(crate) fn conductivity_of(&self, joint: &Joint, plate: usize) -> f64 {
+        match plate {
+            0 => self.conductivity[0],
+            _ if plate == joint.plates.len() - 1 => self.conductivity[1],
+            _ => self.conductivity_between,
+        }
+    }
 }
 
 /// Why a chain gave no number.
@@ -196,7 +209,8 @@ pub fn nominal(chain: &Chain, options: &Options) -> Result<Estimate, Failure> {
 fn assumptions(chain: &Chain) -> Vec<Assumption> {
     let mut all = chain.joint().assumptions.clone();
     // The cone presses as if nothing lay between the plates, so it assumes no modulus.
-    all.retain(|each| chain.knows_the_gap() || each.field != "filler.modulus");
+    let modulus = |field: &str| field.starts_with("filler") && field.ends_with(".modulus");
+    all.retain(|each| chain.knows_the_gap() || !modulus(&each.field));
     all.push(Assumption {
         field: "service.temperature".to_owned(),
         value: "properties at the mean sink surface".to_owned(),
@@ -214,11 +228,13 @@ fn case_result(chain: &Chain, case: usize, numerical_error: f64) -> Result<CaseR
     let bolts = chain.bolts(case, &state);
     let pressure = chain.pressure(case, &state)?;
     let path = &state.path;
+    let interfaces = chain.interfaces(case, (&state, &pressure))?;
     Ok(CaseResult {
         name: named.name,
         sink_temperature: named.temperature,
         bolts,
         pressure,
+        interfaces,
         results: results(path),
         // Both hold: the series of isothermal planes, and the same path without a joint.
         resistance_lower: Some(path.resistance_lower.max(path.perfect_contact)),

@@ -34,6 +34,8 @@ mod sag;
 mod schema;
 mod seats;
 mod service;
+mod stack;
+mod stacking;
 mod syntax;
 mod tightening;
 mod tree;
@@ -224,7 +226,7 @@ fn assembled(file: &Record, tables: &mut Tables<'_>, collector: &mut Collector) 
         .as_ref()
         .and_then(|service| service.cases.first())
         .map(|case| case.temperature);
-    let filler = filler::read(file, collector);
+    let fillers = filler::read(file, plates.as_deref(), collector);
     let measured = filler::measured(file, temperature, collector);
     let Some(plates) = plates else {
         fasteners::read_alone(file, collector);
@@ -247,7 +249,7 @@ fn assembled(file: &Record, tables: &mut Tables<'_>, collector: &mut Collector) 
         sink: sink?,
         fasteners: fasteners?,
         contact: contact?,
-        filler: filler?,
+        fillers: fillers?,
         measured: measured?,
         losses: losses?,
         assumptions: Vec::new(),

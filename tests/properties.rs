@@ -191,7 +191,7 @@ fn best_torque_is_the_last_that_strength_allows() {
 fn physics_does_not_know_which_units_it_is_in() {
     const MM: f64 = 1e3;
     let mut metre = converter_box();
-    metre.contact.emissivity = [1e-12; 2];
+    metre.contact.emissivity = vec![[1e-12; 2]];
     let millimetre = in_millimetres(&metre, MM);
     let [metre, millimetre] = [state(&metre), state(&millimetre)];
     let ratio = |one: f64, other: f64| (one / other - 1.0).abs();
@@ -271,7 +271,10 @@ fn in_millimetres(joint: &Joint, mm: f64) -> Joint {
             seat.inner_radius *= mm;
             seat.outer_radius *= mm;
         }
-        point(&mut group.hole_radius);
+        group
+            .hole_radius
+            .iter_mut()
+            .for_each(|radius| *radius *= mm);
         group.places.iter_mut().for_each(point);
         group.grade.youngs_modulus /= mm * mm;
         assert!(matches!(group.engagement, Engagement::Nut));

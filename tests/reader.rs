@@ -8,6 +8,8 @@ mod fillers;
 mod heat;
 #[path = "reader/plates.rs"]
 mod plates;
+#[path = "reader/stacks.rs"]
+mod stacks;
 
 use std::{fmt::Write, fs, path::PathBuf, time::Instant};
 
@@ -239,7 +241,7 @@ fn the_sketch_of_the_design_reads_whole() {
     );
     assert!(roughness.low < roughness.nominal && roughness.nominal < roughness.high);
     assert!(at(joint.cold().origin, [-0.07, -0.09]));
-    assert!(at(joint.contact.emissivity, [0.05, 0.2]));
+    assert!(at(joint.contact.emissivity[0], [0.05, 0.2]));
     assert!(
         matches!(joint.contact.cone, ConeRule::HalfAngle(angle) if near(angle, 30_f64.to_radians()))
     );
@@ -258,7 +260,7 @@ fn the_sketch_of_the_design_reads_whole() {
     assert!(matches!(&tapped.tightening, Tightening::Torque(torque)
             if (torque.torque - 30.0 * 0.112_984_829).abs() < 1e-8
                 && matches!(torque.friction, Friction::NutFactor(k) if near(k.high, 0.24))));
-    let filler = joint.filler.expect("it is stated");
+    let filler = joint.filler(0).expect("it is stated");
     assert!(near(filler.factor, 1.25));
     assert!(matches!(filler.kind, FillerKind::Paste { applied, .. } if near(applied, 80e-6)));
     let losses = joint.losses.expect("they are stated");

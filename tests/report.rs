@@ -6,9 +6,9 @@ mod solved;
 use ringsum::{
     diagnostic::{Assumption, Caution},
     estimate::{
-        Band, BoltResult, CaseResult, ConeBeside, Driver, Estimate, Flatness, Met, PlaneResult,
-        PressureResult, RequirementResult, Results, RingRow, Rise, SolvedField, SolverHealth,
-        TorquePoint, TorqueSweep,
+        Band, BoltResult, CaseResult, ConeBeside, Driver, Estimate, Flatness, InterfaceResult, Met,
+        PlaneResult, PressureResult, RequirementResult, Results, RingRow, Rise, SolvedField,
+        SolverHealth, TorquePoint, TorqueSweep,
     },
     joint::{Limit, Plane, RequirementKind},
     report::{
@@ -32,6 +32,19 @@ fn plane(low: f64, nominal: f64, high: f64) -> PlaneResult {
     }
 }
 
+/// The interface of that joint.
+fn interface() -> InterfaceResult {
+    InterfaceResult {
+        plates: ["base".to_owned(), "panel".to_owned()],
+        contact: 187.5,
+        force: 15062.0,
+        peak: 61.2e6,
+        contact_area: 9.5e-4,
+        gap_max: None,
+        drop: 0.13,
+    }
+}
+
 /// One case of a joint of six bolts, all numbers made up but of a real size.
 fn case(name: &'static str, sink_temperature: f64) -> CaseResult {
     let bolt = BoltResult {
@@ -47,6 +60,7 @@ fn case(name: &'static str, sink_temperature: f64) -> CaseResult {
         name,
         sink_temperature,
         bolts: vec![bolt; 6],
+        interfaces: vec![interface()],
         pressure: PressureResult {
             peak: 61.2e6,
             contact_area: 9.5e-4,
@@ -192,6 +206,7 @@ fn json_carries_every_key_of_the_contract() {
             "planes",
             "bolts",
             "pressure",
+            "interfaces",
             "results",
             "bounds",
             "numerical_error",
@@ -805,4 +820,43 @@ fn a_record_answers_to_its_names() {
             }
         }
     }
+}
+
+#[test]
+fn a_stack_tells_each_of_its_interfaces() {
+    let mut found = solved(Flatness::Flat);
+    let first = InterfaceResult {
+        plates: ["base".to_owned(), "shim".to_owned()],
+        gap_max: Some(5.6e-6),
+        ..interface()
+    };
+    let second = InterfaceResult {
+        plates: ["shim".to_owned(), "panel".to_owned()],
+        contact: 12.5,
+        ..first.clone()
+    };
+    found.cases[0].interfaces = vec![first, second];
+    let told = &json::estimate(&found)["interfaces"];
+    assert_eq!(told[1]["plates"], json!(["shim", "panel"]));
+    assert_eq!(told[1]["contact_conductance"], json!(12.5));
+    assert_eq!(told[0]["gap_max"], json!(5.6e-6));
+    assert_eq!(told[0]["drop_per_watt"], json!(0.13));
+    let text = text::estimate(&found);
+    for part in [
+        "pressure between base and shim:",
+        "shim and panel: contact only 12.50 W/K, mean drop 0.1300 K/W",
+        "all interfaces in series",
+    ] {
+        assert!(text.contains(part), "{part}\n{text}");
+    }
+    assert!(
+        text.lines().all(|line| line.chars().count() <= WIDTH),
+        "{text}"
+    );
+    // Two plates are told as ever.
+    let pair = text::estimate(&solved(Flatness::Flat));
+    assert!(
+        pair.contains("\npressure: ") && !pair.contains("in series"),
+        "{pair}"
+    );
 }

@@ -106,7 +106,7 @@ fn the_ring_sum_is_that_of_the_solved_field() {
     let joint = joint(&text(), &[]);
     let chain = chain(&joint, Fineness::Normal);
     let state = chain.state(0, &Realisation::default()).expect("a state");
-    let faces = &state.conditions.faces;
+    let faces = &state.conditions.faces[0];
     let found = case(&chain).results.contact.resistance.nominal.recip();
     // 1e5 rings of the same field and laws; beyond the contact only radiation crosses.
     let rings = 100_000;

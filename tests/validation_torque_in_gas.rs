@@ -33,7 +33,7 @@ fn joint_with(sets: &[String]) -> Joint {
 fn open_distance(joint: &Joint) -> f64 {
     let cone = Chain::new(joint).expect("a chain");
     let state = cone.state(0, &Realisation::default()).expect("a state");
-    state.conditions.faces.local.separation(0.0)
+    state.conditions.faces[0].local.separation(0.0)
 }
 
 /// The joint with the mean planes of the reference: roughness and slope scaled alike leave the

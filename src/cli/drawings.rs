@@ -45,19 +45,20 @@ pub fn of_joint(joint: &Joint, fields: &Fields) -> Vec<(&'static str, Drawing)> 
         details: joint.plates.iter().flat_map(details).collect(),
         ..map
     };
-    let pressure = match PlanPair::of(&joint.title, field) {
+    let title = title(joint);
+    let pressure = match PlanPair::of(&title, field) {
         Some(pair) => (
             PRESSURE_AND_GAP,
             Drawing::PressureAndGap(Box::new(pair.furnished(furnish))),
         ),
         None => (
             PRESSURE,
-            Drawing::Plan(furnish(PlanMap::pressure(&joint.title, field))),
+            Drawing::Plan(furnish(PlanMap::pressure(&title, field))),
         ),
     };
-    let conductance = Drawing::Plan(furnish(PlanMap::conductance(&joint.title, field)));
+    let conductance = Drawing::Plan(furnish(PlanMap::conductance(&title, field)));
     let cumulative = Drawing::Cumulative(CumulativePlot {
-        title: joint.title.clone(),
+        title,
         curves: curves(&fields.rings),
         marks: marks(joint, nominal),
     });
@@ -83,6 +84,15 @@ pub fn of_joint(joint: &Joint, fields: &Fields) -> Vec<(&'static str, Drawing)> 
         drawings.push((SECTION, Drawing::Section(Box::new(plot))));
     }
     drawings
+}
+
+/// The title of the joint; of a stack with the interface that is drawn, the first.
+fn title(joint: &Joint) -> String {
+    if joint.interfaces() > 1 {
+        format!("{}: {}", joint.title, joint.interface_name(0))
+    } else {
+        joint.title.clone()
+    }
 }
 
 fn outline(plate: &Plate) -> PlanOutline {
@@ -162,7 +172,7 @@ fn bolts(joint: &Joint, nominal: &Estimate, field: &FieldMap) -> Vec<PlanBolt> {
         .enumerate()
         .map(|(index, (group, at))| PlanBolt {
             at,
-            hole_radius: group.hole_radius[0].max(group.hole_radius[1]),
+            hole_radius: group.widest_hole(),
             head_radius: group.head_seat.outer_radius,
             contact_radius: results
                 .get(index)
@@ -251,7 +261,7 @@ fn marks(joint: &Joint, nominal: &Estimate) -> Vec<RadiusMark> {
         radius,
     };
     let mut marks = vec![
-        mark("hole", group.hole_radius[0].max(group.hole_radius[1])),
+        mark("hole", group.widest_hole()),
         mark("bearing", group.head_seat.outer_radius),
     ];
     let results = nominal.cases.first().map_or(&[][..], |case| &case.bolts);

@@ -12,10 +12,8 @@ use field::GAS_MATTERS;
 use crate::{
     catalog,
     diagnostic::{Caution, registry},
-    estimate::{
-        CaseResult, Chain, Failure, Realisation, State, chain::LARGE_ERROR, group_label, surfaces,
-    },
-    joint::{FillerKind, Joint, Medium, Sink},
+    estimate::{CaseResult, Chain, Failure, Realisation, State, chain::LARGE_ERROR, group_label},
+    joint::{FillerKind, Finish, Joint, Medium, Plate, Sink},
     preload,
 };
 
@@ -182,7 +180,8 @@ fn resistance_cautions(chain: &Chain, state: &State, cases: &[CaseResult]) -> Ve
 fn service_cautions(chain: &Chain, cases: &[CaseResult]) -> Result<Vec<Caution>, Failure> {
     let joint = chain.joint();
     let mut found = Vec::new();
-    let gas_matters = !surfaces::bridged(joint) && joint.filler.is_none();
+    let gas_matters = (0..joint.interfaces())
+        .any(|interface| joint.is_bare(interface) && joint.filler(interface).is_none());
     match &joint.service.medium {
         Medium::Gas { gas, .. } if gas_matters && chain.gas_share()? > GAS_MATTERS => {
             found.extend(flatters(chain, &gas.name, cases)?);
@@ -232,22 +231,20 @@ fn flatters(chain: &Chain, gas: &str, cases: &[CaseResult]) -> Result<Option<Cau
 }
 
 fn vacuum_materials(joint: &Joint) -> Vec<Caution> {
-    let mut found: Vec<String> = joint
-        .plates
-        .iter()
-        .filter_map(|plate| {
-            let family = &plate.finish.coating.as_ref()?.plating.family;
+    let mut found: Vec<String> = faying(joint)
+        .filter_map(|(plate, finish)| {
+            let family = &finish.coating.as_ref()?.plating.family;
             ["cadmium", "zinc", "tin"]
                 .contains(&family.as_str())
                 .then(|| format!("{family} on {}", plate.name))
         })
         .collect();
     let silicone = joint
-        .filler
-        .as_ref()
-        .and_then(|filler| catalog::filler(&filler.name))
+        .every_filler()
+        .filter_map(|filler| catalog::filler(&filler.name))
         .filter(|record| record.silicone);
     found.extend(silicone.map(|record| record.name.clone()));
+    found.dedup();
     if found.is_empty() {
         return Vec::new();
     }
@@ -260,15 +257,22 @@ fn vacuum_materials(joint: &Joint) -> Vec<Caution> {
     )]
 }
 
+/// Every faying face with its plate, from warm to cold.
+fn faying(joint: &Joint) -> impl Iterator<Item = (&Plate, &Finish)> {
+    (0..joint.interfaces()).flat_map(|interface| {
+        let plates = joint.meeting(interface);
+        plates.into_iter().zip(joint.finishes(interface))
+    })
+}
+
 fn insulates(joint: &Joint) -> bool {
-    let film = joint.plates.iter().any(|plate| {
-        plate
-            .finish
+    let film = faying(joint).any(|(_, finish)| {
+        finish
             .coating
             .as_ref()
             .is_some_and(|coating| !coating.plating.metal)
     });
-    let filler = joint.filler.as_ref().is_some_and(|filler| {
+    let filler = joint.every_filler().any(|filler| {
         catalog::filler(&filler.name)
             .map_or(matches!(filler.kind, FillerKind::Layer { .. }), |record| {
                 record.insulates

@@ -19,8 +19,8 @@ use elastic::ElasticModel;
 use crate::{
     diagnostic::Caution,
     estimate::{
-        Band, BoltResult, Choice, Failure, Fineness, PressureResult, Realisation, RingRow,
-        Strength, Watch,
+        Band, BoltResult, Choice, Failure, Fineness, InterfaceResult, PressureResult, Realisation,
+        RingRow, Strength, Watch,
         forces::{self, Group},
     },
     joint::{Fastener, Joint, Medium, Tightening},
@@ -323,6 +323,22 @@ impl<'a> Chain<'a> {
         match &self.model {
             Model::Cone(model) => Ok(model.pressure(&state.conditions.forces)),
             Model::Elastic(model) => model.pressure(self, case),
+        }
+    }
+
+    /// Every interface of a state, from warm to cold.
+    pub fn interfaces(
+        &self,
+        case: usize,
+        (state, pressure): (&State, &PressureResult),
+    ) -> Result<Vec<InterfaceResult>, Failure> {
+        match &self.model {
+            Model::Cone(_) => Ok(vec![InterfaceResult::only(
+                self.joint(),
+                &state.path,
+                pressure,
+            )]),
+            Model::Elastic(model) => model.interfaces(self, case),
         }
     }
 

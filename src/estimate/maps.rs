@@ -5,11 +5,13 @@ use crate::{
     joint::{Joint, Plate},
 };
 
-/// Pressure, gap and local conductance over the window of both plates, `columns` points wide.
+/// Pressure, gap and local conductance of the first interface over the window of all plates,
+/// `columns` points wide.
 pub fn field_map(chain: &Chain, columns: usize) -> Result<FieldMap, Failure> {
     let state = chain.state(0, &Realisation::default())?;
     let peak = chain.pressure(0, &state)?.peak;
-    let faces = state.conditions.faces.over_many_points(peak);
+    let first = &state.conditions.faces[0];
+    let faces = first.over_many_points(peak);
     let window = window(chain.joint());
     let [left, lower, right, upper] = window;
     let step = (right - left) / columns as f64;
@@ -31,14 +33,14 @@ pub fn field_map(chain: &Chain, columns: usize) -> Result<FieldMap, Failure> {
             map.pressure.push(met.map_or(f64::NAN, |met| met.pressure));
             map.conductance
                 .push(met.map_or(f64::NAN, |met| match met.gap {
-                    Some(gap) if gap > 0.0 => state.conditions.faces.local.parted(gap),
+                    Some(gap) if gap > 0.0 => first.local.parted(gap),
                     _ => faces(met.pressure),
                 }));
             if let Some(gaps) = &mut map.gap {
                 // Beside feet the gap is their height, which would drown the gaps under them.
                 let on_feet = chain
                     .joint()
-                    .plates
+                    .meeting(0)
                     .iter()
                     .all(|plate| plate.stands_at([x, y]));
                 let gap = met.filter(|_| on_feet).and_then(|met| met.gap);
@@ -57,7 +59,7 @@ pub fn ring_tables(chain: &Chain) -> Result<Vec<Vec<RingRow>>, Failure> {
         .collect())
 }
 
-/// The rectangle that holds both plates: left, lower, right, upper, m.
+/// The rectangle that holds all plates: left, lower, right, upper, m.
 pub(super) fn window(joint: &Joint) -> [f64; 4] {
     joint
         .plates

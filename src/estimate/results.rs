@@ -9,7 +9,8 @@ use crate::{
         Temperatures,
         cautions::{FLATNESS_DECIDES, GAP_IGNORED},
     },
-    joint::{Limit, RequirementKind},
+    joint::{Joint, Limit, RequirementKind},
+    resistance::Path,
 };
 
 /// Low, nominal and high of one number; low and high are absent when no draws were made.
@@ -54,7 +55,7 @@ pub struct PlaneResult {
 /// The five results of one thermal case.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Results {
-    /// The faying faces alone: ring sum.
+    /// The faying faces alone: ring sum; in a stack those of all interfaces in series.
     pub contact: PlaneResult,
     /// Mean of the first plate to mean of the last.
     pub node_to_node: PlaneResult,
@@ -102,6 +103,45 @@ pub struct PressureResult {
     pub gap_mean: Option<f64>,
     /// What only a solved field tells; none for the cone.
     pub solved: Option<SolvedField>,
+}
+
+/// One interface at nominal inputs.
+#[derive(Clone, Debug, PartialEq)]
+pub struct InterfaceResult {
+    /// Names of the plates that meet there, warm one first.
+    pub plates: [String; 2],
+    /// Ring sum, W/K.
+    pub contact: f64,
+    /// Force carried, N.
+    pub force: f64,
+    /// Highest pressure, Pa.
+    pub peak: f64,
+    /// Area in contact, m².
+    pub contact_area: f64,
+    /// Widest gap, m; the cone knows none.
+    pub gap_max: Option<f64>,
+    /// Mean drop per watt through the joint, K/W.
+    pub drop: f64,
+}
+
+impl InterfaceResult {
+    /// The plates in words: `box and shim`.
+    pub fn between(&self) -> String {
+        self.plates.join(" and ")
+    }
+
+    /// The one interface of two plates, as path and pressure tell of it.
+    pub(crate) fn only(joint: &Joint, path: &Path, pressure: &PressureResult) -> Self {
+        Self {
+            plates: joint.meeting(0).map(|plate| plate.name.clone()),
+            contact: path.contact,
+            force: pressure.force,
+            peak: pressure.peak,
+            contact_area: pressure.contact_area,
+            gap_max: pressure.gap_max,
+            drop: path.interface_drop,
+        }
+    }
 }
 
 /// What an elastic field tells beyond pressure and gap.
@@ -199,7 +239,7 @@ pub struct Rise {
     pub source: Band,
     /// Hottest point of the first plate.
     pub hottest: Band,
-    /// Mean drop across the interface.
+    /// Mean drop across the interface; in a stack the sum over all interfaces.
     pub interface_drop: Band,
     /// Film drop from the sink surface to the coolant, where there is a film.
     pub coolant_drop: Option<f64>,
@@ -240,8 +280,10 @@ pub struct CaseResult {
     pub sink_temperature: f64,
     /// Every bolt in file order.
     pub bolts: Vec<BoltResult>,
-    /// The pressure field.
+    /// The pressure field; in a stack that of the first interface.
     pub pressure: PressureResult,
+    /// Every interface, from warm to cold.
+    pub interfaces: Vec<InterfaceResult>,
     /// The results.
     pub results: Results,
     /// Proved lower bound of source to sink for the field used, K/W.
@@ -253,7 +295,7 @@ pub struct CaseResult {
     /// Largest error of the surface that the draws are read from, relative to source to sink; none
     /// where every draw is solved, and without draws.
     pub draw_error: Option<f64>,
-    /// Area of the faying faces, m².
+    /// Area of the faying faces, m²; in a stack that of the first interface.
     pub footprint: f64,
     /// Temperature rises, when heat is stated.
     pub rise: Option<Rise>,

@@ -1,10 +1,10 @@
-//! The two faces of a joint at one temperature and one realisation, ready for the laws.
+//! The faces of every interface at one temperature and one realisation, ready for the laws.
 
 use crate::{
     catalog::{Datum, Material},
     conductance::{Face, Hardness, Interface, Layer, gas},
     estimate::{Failure, Realisation},
-    joint::{FillerKind, Joint, Measured, MeasuredKind, Medium, Plate},
+    joint::{Facing, Joint, Measured, MeasuredKind, Medium, Plate},
 };
 
 /// Hardness over its catalogue value when the catalogue knows no range.
@@ -35,15 +35,31 @@ pub fn conductivity(plate: &Plate, temperature: f64, place: f64) -> Result<f64, 
     Ok(value * factor_at(datum, CONDUCTIVITY_FACTOR, place))
 }
 
-/// Everything the laws need, at the temperature of a case.
-pub fn interface(joint: &Joint, case: usize, at: &Realisation) -> Result<Interface, Failure> {
+/// Conductivity of every plate at the temperature of a case, W/(m K).
+pub fn conductivities(joint: &Joint, case: usize, at: &Realisation) -> Result<Vec<f64>, Failure> {
     let temperature = joint.service.cases[case].temperature;
-    let filler = joint.filler.as_ref();
+    let plates = joint.plates.iter().enumerate();
+    plates
+        .map(|(index, plate)| conductivity(plate, temperature, at.conductivity_of(joint, index)))
+        .collect()
+}
+
+/// Everything the laws need of an interface (0 is the warmest), at the temperature of a case.
+///
+/// Roughness and slope of the warm faces lie at one place of their ranges in all interfaces, and so
+/// do those of the cold faces: the same shop makes them. Law, hardness, filler and gas move alike.
+pub fn interface(
+    joint: &Joint,
+    (case, index): (usize, usize),
+    at: &Realisation,
+) -> Result<Interface, Failure> {
+    let temperature = joint.service.cases[case].temperature;
+    let filler = joint.filler(index);
     let measured = joint.measured.as_ref();
     Ok(Interface {
         faces: [
-            face(joint, (0, temperature), at)?,
-            face(joint, (joint.plates.len() - 1, temperature), at)?,
+            face(joint, (index, Facing::Cold, temperature), at)?,
+            face(joint, (index, Facing::Warm, temperature), at)?,
         ],
         law: joint.contact.law,
         gas: match &joint.service.medium {
@@ -67,22 +83,27 @@ pub fn interface(joint: &Joint, case: usize, at: &Realisation) -> Result<Interfa
 
 fn face(
     joint: &Joint,
-    (index, temperature): (usize, f64),
+    (interface, facing, temperature): (usize, Facing, f64),
     at: &Realisation,
 ) -> Result<Face, Failure> {
+    // The warm face of an interface looks towards the cold side.
+    let side = match facing {
+        Facing::Cold => 0,
+        Facing::Warm => 1,
+    };
+    let index = interface + side;
     let plate = &joint.plates[index];
-    let side = index.min(1);
-    let finish = &plate.finish;
+    let finish = plate.face(facing);
     Ok(Face {
         // Below a spot a solid of two conductivities spreads heat as one of √(k_in k_through) does.
-        conductivity: conductivity(plate, temperature, at.conductivity[side])?
+        conductivity: conductivity(plate, temperature, at.conductivity_of(joint, index))?
             * plate.material.through_ratio().sqrt(),
         roughness: finish.roughness.at(at.roughness[side]),
         slope: finish.slope * finish.slope_factor.powf(at.slope[side]),
         youngs_modulus: plate.material.youngs_modulus.value,
         poisson: plate.material.poisson.value,
-        hardness: hardness(joint, plate, at.hardness)?,
-        emissivity: joint.contact.emissivity[side],
+        hardness: hardness((joint, interface), plate, at.hardness)?,
+        emissivity: joint.contact.emissivity[interface][side],
         coating: finish.coating.as_ref().map(|coating| Layer {
             thickness: coating.thickness,
             conductivity: coating.plating.conductivity.value,
@@ -92,7 +113,11 @@ fn face(
     })
 }
 
-fn hardness(joint: &Joint, plate: &Plate, place: f64) -> Result<Hardness, Failure> {
+fn hardness(
+    (joint, interface): (&Joint, usize),
+    plate: &Plate,
+    place: f64,
+) -> Result<Hardness, Failure> {
     let Material {
         microhardness,
         hardness,
@@ -107,18 +132,9 @@ fn hardness(joint: &Joint, plate: &Plate, place: f64) -> Result<Hardness, Failur
             datum.value * factor_at(datum, HARDNESS_OVER_BULK, place),
         )),
         // Where the spots carry nothing the hardness is not asked for.
-        (None, None) if bridged(joint) => Ok(Hardness::Meyer(1e9)),
+        (None, None) if !joint.is_bare(interface) => Ok(Hardness::Meyer(1e9)),
         (None, None) => Err(Failure::NoHardness(plate.name.clone())),
     }
-}
-
-/// Whether a layer of filler or own measurements stand for the solid spots.
-pub fn bridged(joint: &Joint) -> bool {
-    joint.measured.is_some()
-        || joint
-            .filler
-            .as_ref()
-            .is_some_and(|filler| !matches!(filler.kind, FillerKind::Fluid { .. }))
 }
 
 /// Measured h(p) points; a force law enters elsewhere.

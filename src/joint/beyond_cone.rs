@@ -10,6 +10,12 @@ impl Joint {
     /// Checked: `a_plain_joint_needs_no_elastic_field`, `each_field_beyond_the_cone_is_named`.
     pub fn needs_elastic(&self) -> Vec<(String, &'static str)> {
         let mut needs = Vec::new();
+        if self.plates.len() > 2 {
+            needs.push((
+                "plate".into(),
+                "the cone knows two plates, and these are more",
+            ));
+        }
         for plate in &self.plates {
             let field = |key: &str| format!("plate.{}.{key}", plate.name);
             let stated = [

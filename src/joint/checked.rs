@@ -8,7 +8,12 @@ use crate::{catalog, diagnostic::Assumption};
 
 pub use flatness_map::FlatnessMap;
 pub use heat::{CooledPart, Cooling, Edge, HeatedZone, Heating, Sink, Source, Zone};
-pub use plates::{Bimetal, Coating, Feet, Finish, Outline, Patch, Plate, Rib, Sag};
+pub use plates::{
+    Bimetal, Coating, Facing, Feet, Finish, Outline, Patch, Plate, Rib, Sag, Underside,
+};
+
+/// Most plates of a joint.
+pub const MOST_PLATES: usize = 6;
 
 /// Everything the chain needs to know of one joint. Lengths in m, every other value in SI.
 ///
@@ -20,7 +25,7 @@ pub struct Joint {
     pub title: String,
     /// Medium, temperatures, heat and what is required.
     pub service: Service,
-    /// Plates from warm to cold; two.
+    /// Plates from warm to cold; two to [`MOST_PLATES`].
     pub plates: Vec<Plate>,
     /// Where heat enters the first plate.
     pub source: Heating,
@@ -30,8 +35,8 @@ pub struct Joint {
     pub fasteners: Vec<Fastener>,
     /// How the faces touch.
     pub contact: Contact,
-    /// What fills the gaps instead of the medium.
-    pub filler: Option<Filler>,
+    /// What fills the gaps of each interface instead of the medium, from warm to cold.
+    pub fillers: Vec<Option<Filler>>,
     /// The user's own measurements; they override the laws.
     pub measured: Option<Measured>,
     /// Losses of clamp force asked for; without them losses act on the low force only.
@@ -176,8 +181,8 @@ pub struct Fastener {
     pub friction_radius: f64,
     /// Whether the seat is a cone (countersunk head).
     pub conical_seat: bool,
-    /// Hole radius in the first and the last plate, m.
-    pub hole_radius: [f64; 2],
+    /// Hole radius in each plate, from warm to cold, m.
+    pub hole_radius: Vec<f64>,
     /// Total thickness of washers in the grip, m.
     pub washer_thickness: f64,
     /// Number of washers in the grip; each adds a contact that settles.
@@ -291,7 +296,7 @@ pub enum Friction {
 }
 
 /// How the faces touch.
-#[derive(Clone, Copy, Debug, PartialEq)]
+#[derive(Clone, Debug, PartialEq)]
 pub struct Contact {
     /// Law of the solid spots.
     pub law: Law,
@@ -299,8 +304,8 @@ pub struct Contact {
     pub cone: ConeRule,
     /// Shape of the pressure over the radius.
     pub shape: ConeShape,
-    /// Hemispherical emissivity of the two faces.
-    pub emissivity: [f64; 2],
+    /// Hemispherical emissivity of the warm and the cold face of each interface.
+    pub emissivity: Vec<[f64; 2]>,
     /// How the heads press.
     pub head_model: HeadModel,
     /// Whether the faces slide on each other.

@@ -3,7 +3,7 @@
 use crate::{
     catalog::{ColdFault, Material},
     joint::{
-        Case, Fastener, FillerKind, Joint,
+        Case, Fastener, Joint,
         collector::{Collector, Wording, fault},
         record::Record,
         tree::Span,
@@ -38,36 +38,31 @@ pub(super) fn check(joint: &Joint, file: &Record, collector: &mut Collector) {
             collector.report(data_fault(&cold, &record.span("grade"), advice));
         }
     }
-    if is_bare(joint) {
-        for (plate, record) in joint.plates.iter().zip(plates) {
-            let material = &plate.material;
-            let known = material.hardness.is_some() || material.microhardness.is_some();
-            collector.require(known, || {
-                fault(
-                    "material/missing-property",
-                    &record.span("material"),
-                    format!(
-                        "`{}` has no hardness, which bare contact needs",
-                        material.name
-                    ),
-                )
-                .expecting("expected a material with hardness")
-                .help("state it: `material = { like = \"…\", hardness = \"1200 MPa\" }`")
-            });
+    for (index, (plate, record)) in joint.plates.iter().zip(plates).enumerate() {
+        let mut beside = [index.wrapping_sub(1), index].into_iter();
+        if !beside.any(|interface| interface < joint.interfaces() && joint.is_bare(interface)) {
+            continue;
         }
+        let material = &plate.material;
+        let known = material.hardness.is_some() || material.microhardness.is_some();
+        collector.require(known, || {
+            fault(
+                "material/missing-property",
+                &record.span("material"),
+                format!(
+                    "`{}` has no hardness, which bare contact needs",
+                    material.name
+                ),
+            )
+            .expecting("expected a material with hardness")
+            .help("state it: `material = { like = \"…\", hardness = \"1200 MPa\" }`")
+        });
+    }
+    if (0..joint.interfaces()).any(|interface| joint.is_bare(interface)) {
         for case in &joint.service.cases {
             collector.require(case.temperature >= LAWS_END, || cold_contact(file, case));
         }
     }
-}
-
-/// Whether heat crosses bare faces by the laws.
-fn is_bare(joint: &Joint) -> bool {
-    let filled = joint
-        .filler
-        .as_ref()
-        .is_some_and(|filler| !matches!(filler.kind, FillerKind::Fluid { .. }));
-    !filled && joint.measured.is_none()
 }
 
 fn cold_data(material: &Material, joint: &Joint, span: &Span, collector: &mut Collector) {

@@ -3,7 +3,7 @@
 use crate::{
     catalog::MaterialKind,
     joint::{
-        Compliance, ConeRule, ConeShape, Contact, FaceFriction, HeadModel, Law, Losses,
+        Compliance, ConeRule, ConeShape, Contact, FaceFriction, Finish, HeadModel, Law, Losses,
         collector::{Collector, Wording, fault},
         plates::PlateDraft,
         record::{PerPlate, Record},
@@ -17,10 +17,10 @@ const EMISSIVITY: [f64; 2] = [0.1, 0.8];
 /// Short-term relaxation of all-metal joints in NASA practice (memory).
 const RELAXATION: f64 = 0.05;
 
-/// Reads `[contact]` with the emissivity of both faces.
+/// Reads `[contact]` with the emissivity of all faces.
 pub(super) fn read(
     file: &Record,
-    plates: &[PlateDraft; 2],
+    plates: &[PlateDraft],
     collector: &mut Collector,
 ) -> Option<Contact> {
     let absent = Record::absent("contact", &(0..0));
@@ -98,19 +98,23 @@ fn shape(record: &Record, cone: Option<ConeRule>, collector: &mut Collector) -> 
     }
 }
 
+/// Emissivity of the warm and the cold face of every interface.
 fn emissivity(
     record: &Record,
-    plates: &[PlateDraft; 2],
+    plates: &[PlateDraft],
     collector: &mut Collector,
-) -> Option<[f64; 2]> {
+) -> Option<Vec<[f64; 2]>> {
     if record.has("emissivity") && record.per_plate("emissivity").is_none() {
         return None;
     }
-    let mut stated = [None; 2];
+    let mut stated = vec![None; plates.len()];
     match record.per_plate("emissivity") {
         None => {}
-        Some(PerPlate::Both(both)) => stated = [Some(*both); 2],
-        Some(PerPlate::Each(each)) => stated = each.map(Some),
+        Some(PerPlate::Both(both)) => stated.fill(Some(*both)),
+        Some(PerPlate::Each(each)) => {
+            one_for_each(record, ("emissivity", each), plates, collector)?;
+            stated = each.iter().copied().map(Some).collect();
+        }
         Some(PerPlate::Named(named)) => {
             for (name, span, value) in named {
                 match plates.iter().position(|plate| plate.name == *name) {
@@ -120,35 +124,69 @@ fn emissivity(
             }
         }
     }
-    let mut emissivity = [0.0; 2];
-    for ((value, plate), common) in emissivity.iter_mut().zip(plates).zip(stated) {
+    let mut faces = Vec::with_capacity(plates.len());
+    for (plate, common) in plates.iter().zip(stated) {
         let own = plate.record.number("emissivity");
         if plate.record.has("emissivity") && own.is_none() {
             return None;
         }
-        *value = match own.or(common) {
-            Some(emissivity) => emissivity,
-            None => assumed_emissivity(plate, collector)?,
-        };
+        faces.push(match own.or(common) {
+            Some(emissivity) => [emissivity; 2],
+            None => assumed_emissivities(plate, collector)?,
+        });
     }
-    Some(emissivity)
+    let pairs = faces.windows(2).map(|pair| [pair[0][1], pair[1][0]]);
+    Some(pairs.collect())
 }
 
-fn assumed_emissivity(plate: &PlateDraft, collector: &mut Collector) -> Option<f64> {
-    let film = plate
-        .finish
-        .as_ref()?
+/// A list of values is one for each plate.
+pub(super) fn one_for_each(
+    record: &Record,
+    (key, values): (&str, &[f64]),
+    plates: &[PlateDraft],
+    collector: &mut Collector,
+) -> Option<()> {
+    let whole = values.len() == plates.len();
+    collector.require(whole, || {
+        fault(
+            "file/wrong-type",
+            &record.span(key),
+            format!(
+                "`{key}` has {} values for {} plates",
+                values.len(),
+                plates.len()
+            ),
+        )
+        .expecting("expected one value for each plate")
+        .help("or name the plates: `{ base = …, panel = … }`")
+    });
+    whole.then_some(())
+}
+
+/// Emissivity of the faces towards the warm and the cold side of a plate that states none.
+fn assumed_emissivities(plate: &PlateDraft, collector: &mut Collector) -> Option<[f64; 2]> {
+    let (above, why) = assumed_emissivity(plate, plate.finish.as_ref()?)?;
+    collector.assume(plate.record.at("emissivity"), above.to_string(), why);
+    let Some(below) = &plate.finish_below else {
+        return Some([above; 2]);
+    };
+    let (below, why) = assumed_emissivity(plate, below)?;
+    let path = plate.record.at("finish_below.emissivity");
+    collector.assume(path, below.to_string(), why);
+    Some([above, below])
+}
+
+fn assumed_emissivity(plate: &PlateDraft, finish: &Finish) -> Option<(f64, &'static str)> {
+    let film = finish
         .coating
         .as_ref()
         .is_some_and(|coating| !coating.plating.metal);
     let metal = plate.material.as_ref()?.kind == MaterialKind::Metal;
-    let (emissivity, why) = if metal && !film {
+    Some(if metal && !film {
         (EMISSIVITY[0], "bare metal")
     } else {
         (EMISSIVITY[1], "an oxide film or a non-metal")
-    };
-    collector.assume(plate.record.at("emissivity"), emissivity.to_string(), why);
-    Some(emissivity)
+    })
 }
 
 /// Reads `[losses]`: the outer option is none when it is faulty.

@@ -4,7 +4,7 @@ use crate::{
     catalog::{self, Grade, Thread},
     diagnostic::Fault,
     joint::{
-        Engagement, Fastener, MOST_PLACES,
+        Engagement, Fastener, MOST_PLACES, MOST_PLATES,
         collector::{Collector, Wording, fault},
         isolating,
         lands::{self, Land, Site},
@@ -23,7 +23,7 @@ use crate::{
 /// Reads all fastener groups; none when one of them is faulty.
 pub(super) fn read(
     file: &Record,
-    (plates, own): (&[PlateDraft; 2], &Own),
+    (plates, own): (&[PlateDraft], &Own),
     collector: &mut Collector,
 ) -> Option<Vec<Fastener>> {
     let records = file.records("fastener");
@@ -69,7 +69,7 @@ pub(super) fn read_alone(file: &Record, collector: &mut Collector) {
 /// A group, and its site even when other parts of the group are faulty.
 fn group(
     record: &Record,
-    (plates, own): (&[PlateDraft; 2], &Own),
+    (plates, own): (&[PlateDraft], &Own),
     collector: &mut Collector,
 ) -> (Option<Fastener>, Option<Site>) {
     let thread = thread(record, collector);
@@ -79,7 +79,8 @@ fn group(
     let tightening = tightening::read(record, collector);
     let places = patterns::read(record, plates[0].outline.as_ref(), collector);
     let seated = thread.zip(head_plate).and_then(|(thread, head_plate)| {
-        let engagement = engagement(record, thread, &plates[1 - head_plate], collector)?;
+        let far = plates.len() - 1 - head_plate;
+        let engagement = engagement(record, thread, &plates[far], collector)?;
         let bolt = Bolt {
             record,
             thread,
@@ -91,8 +92,9 @@ fn group(
         Some(Seated {
             engagement,
             head_plate,
+            count: plates.len(),
             holes,
-            seats: seats::read(bolt, holes, collector)?,
+            seats: seats::read(bolt, [holes[head_plate], holes[far]], collector)?,
         })
     });
     let engagement = seated.map(|seated| seated.engagement);
@@ -111,7 +113,7 @@ fn group(
             nut_seat: seated.seats.nut,
             friction_radius: seated.seats.friction_radius,
             conical_seat: seated.seats.conical,
-            hole_radius: seated.holes,
+            hole_radius: seated.holes[..plates.len()].to_vec(),
             washer_thickness: seated.seats.washer_thickness,
             washers: seated.seats.washers,
             cylindrical_head: seated.seats.cylindrical,
@@ -136,15 +138,18 @@ fn group(
 struct Seated {
     engagement: Engagement,
     head_plate: usize,
-    holes: [f64; 2],
+    /// Number of plates.
+    count: usize,
+    holes: [f64; MOST_PLATES],
     seats: Seats,
 }
 
 impl Seated {
     fn land(self) -> Land {
-        let mut seats = [0.0; 2];
+        let mut seats = [0.0; MOST_PLATES];
         seats[self.head_plate] = self.seats.head.outer_radius;
-        seats[1 - self.head_plate] = self.seats.nut.map_or(0.0, |nut| nut.outer_radius);
+        seats[self.count - 1 - self.head_plate] =
+            self.seats.nut.map_or(0.0, |nut| nut.outer_radius);
         Land {
             holes: self.holes,
             seats,
@@ -210,11 +215,7 @@ fn grade(
     grade
 }
 
-fn head_plate(
-    record: &Record,
-    plates: &[PlateDraft; 2],
-    collector: &mut Collector,
-) -> Option<usize> {
+fn head_plate(record: &Record, plates: &[PlateDraft], collector: &mut Collector) -> Option<usize> {
     let Some(name) = record.text("from") else {
         return (!record.has("from")).then_some(0);
     };
@@ -222,7 +223,19 @@ fn head_plate(
     if place.is_none() {
         collector.report(unknown_plate(name, &record.span("from"), plates));
     }
-    place
+    let outer = place.filter(|place| *place == 0 || *place == plates.len() - 1);
+    if place.is_some() && outer.is_none() {
+        collector.report(
+            fault(
+                "plate/misplaced",
+                &record.span("from"),
+                format!("plate `{}` lies between others", short(name)),
+            )
+            .expecting("expected the first or the last plate")
+            .help("bolts clamp the whole stack: their heads sit on one of its outer faces"),
+        );
+    }
+    outer
 }
 
 fn engagement(

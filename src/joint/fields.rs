@@ -69,6 +69,8 @@ pub enum Kind {
     SpreadOr(Catalogue),
     /// One value for both plates, a list of two, or a table by plate name.
     PerPlate(Measure),
+    /// Two names.
+    Names,
     /// Two lengths.
     Point,
     /// A list of points.
@@ -208,6 +210,7 @@ impl Kind {
                 format!("a number, a range of them or {}", catalogue.expects())
             }
             Self::PerPlate(measure) => format!("{}, or one per plate", measure.expects()),
+            Self::Names => "two names, `[\"base\", \"shim\"]`".into(),
             Self::Point => "two lengths, `[\"80 mm\", \"60 mm\"]`".into(),
             Self::Points => "a list of points, `[[\"10 mm\", \"10 mm\"], …]`".into(),
             Self::Pairs([first, second]) => {

@@ -7,10 +7,11 @@ use crate::{
     joint::{
         Filler, FillerKind, Measured, MeasuredKind,
         collector::{Collector, Wording, fault},
-        plates::two_ways,
+        plates::{PlateDraft, two_ways},
         record::Record,
+        seats::unknown_plate,
         sections::{FILLER, MEASURED},
-        tree::short,
+        tree::{Span, short},
         walk::missing,
     },
     units::{self, Quantity},
@@ -28,13 +29,99 @@ const SCATTER: [f64; 2] = [0.3, 0.2];
 /// Scatter of the user's own measurements (judgement).
 const MEASURED_SCATTER: f64 = 0.1;
 
-/// Reads `[filler]`: the outer option is none when it is faulty.
-#[expect(clippy::option_option, reason = "faulty and not stated are two things")]
-pub(super) fn read(file: &Record, collector: &mut Collector) -> Option<Option<Filler>> {
-    if !file.has("filler") {
-        return Some(None);
+/// Reads `[[filler]]`: one for each interface, none where there is none; none at all when one is
+/// faulty or the plates are not known.
+pub(super) fn read(
+    file: &Record,
+    plates: Option<&[PlateDraft]>,
+    collector: &mut Collector,
+) -> Option<Vec<Option<Filler>>> {
+    let mut found: Option<Vec<Option<Filler>>> = plates.map(|plates| vec![None; plates.len() - 1]);
+    if file.is_faulty("filler") {
+        return None;
     }
-    let record = file.record("filler")?;
+    let mut taken: Vec<usize> = Vec::new();
+    for record in file.records("filler") {
+        let filler = one(record, collector);
+        let interface = plates.and_then(|plates| interface(record, plates, collector));
+        let (Some(filler), Some(interface)) = (filler, interface) else {
+            found = None;
+            continue;
+        };
+        if taken.contains(&interface) {
+            collector.report(
+                fault(
+                    "filler/interface",
+                    &record.span("between"),
+                    "a second filler lies between the same plates",
+                )
+                .expecting("expected one for each interface")
+                .help("describe both together: their area resistances add, `model = \"table\"`"),
+            );
+            found = None;
+            continue;
+        }
+        taken.push(interface);
+        if let Some(found) = &mut found {
+            found[interface] = filler;
+        }
+    }
+    found
+}
+
+/// Index of the interface in which a filler lies.
+fn interface(record: &Record, plates: &[PlateDraft], collector: &mut Collector) -> Option<usize> {
+    let pairs = || {
+        let named = plates.windows(2).map(|pair| {
+            format!(
+                "`between = [\"{}\", \"{}\"]`",
+                short(&pair[0].name),
+                short(&pair[1].name)
+            )
+        });
+        named.collect::<Vec<String>>().join(" or ")
+    };
+    let Some([one, other]) = record.names("between") else {
+        if record.has("between") {
+            return None;
+        }
+        let only = plates.len() == 2;
+        collector.require(only, || {
+            fault(
+                "filler/interface",
+                &record.place,
+                format!("between which of the {} plates?", plates.len()),
+            )
+            .expecting("expected `between`")
+            .help(format!("state {}", pairs()))
+        });
+        return only.then_some(0);
+    };
+    let mut place = |(name, span): &(String, Span)| {
+        let place = plates.iter().position(|plate| plate.name == *name);
+        if place.is_none() {
+            collector.report(unknown_plate(name, span, plates));
+        }
+        place
+    };
+    let (one, other) = (place(one), place(other));
+    let (one, other) = (one?, other?);
+    let adjacent = one.abs_diff(other) == 1;
+    collector.require(adjacent, || {
+        fault(
+            "filler/interface",
+            &record.span("between"),
+            "these plates do not lie on each other",
+        )
+        .expecting("expected neighbours")
+        .help(format!("state {}", pairs()))
+    });
+    adjacent.then_some(one.min(other))
+}
+
+/// Reads a filler: the outer option is none when it is faulty.
+#[expect(clippy::option_option, reason = "faulty and not stated are two things")]
+fn one(record: &Record, collector: &mut Collector) -> Option<Option<Filler>> {
     let name = record.text("name");
     if let Some(name) = name
         && name.eq_ignore_ascii_case("none")
@@ -257,8 +344,8 @@ fn rising(record: &Record, key: &str, collector: &mut Collector) -> Option<Vec<(
     good.then(|| pairs.iter().map(|([p, value], _)| (*p, *value)).collect())
 }
 
-/// Reads `[measured]`: the outer option is none when it is faulty. `temperature` is that of
-/// service, K.
+/// Reads `[measured]`, which is for two plates: the outer option is none when it is faulty.
+/// `temperature` is that of service, K.
 #[expect(clippy::option_option, reason = "faulty and not stated are two things")]
 pub(super) fn measured(
     file: &Record,
@@ -269,6 +356,16 @@ pub(super) fn measured(
         return Some(None);
     }
     let record = file.record("measured")?;
+    let plates = file.records("plate").len();
+    collector.require(plates <= 2, || {
+        fault(
+            "filler/interface",
+            &record.place,
+            format!("in which interface of the {plates} plates was this measured?"),
+        )
+        .expecting("measurements stand for the one interface of two plates")
+        .help("of a layer state its table of area resistance: `[[filler]] table = …`")
+    });
     let kind = match (record.has("points"), record.has("law")) {
         (true, true) => {
             collector.report(two_ways(record, ["points", "law"]));

@@ -36,9 +36,9 @@ pub fn slope_from_roughness(roughness: f64) -> f64 {
     0.125 * (roughness * 1e6).powf(0.402)
 }
 
-/// Reads the faying face of a plate.
-pub(super) fn read(plate: &Record, collector: &mut Collector) -> Option<Finish> {
-    let record = plate.record("finish")?;
+/// Reads a faying face of a plate, under its key.
+pub(super) fn read(plate: &Record, key: &str, collector: &mut Collector) -> Option<Finish> {
+    let record = plate.record(key)?;
     let before = collector.count();
     let roughness = roughness(record, collector);
     let coating = coating(record, collector);

@@ -1,6 +1,6 @@
 //! What keeps faces apart before any bolt is tightened: bow, measured map, thermal sag.
 
-use crate::joint::{Bimetal, Joint, Plate, Sag};
+use crate::joint::{Bimetal, Facing, Joint, Plate, Sag};
 
 /// Gaps below this leave a joint flat, m: far below any roughness.
 const FLAT: f64 = 1e-12;
@@ -32,34 +32,34 @@ impl Plate {
     }
 }
 
-impl Plate {
-    /// Out-of-flatness that is stated without its shape, m; 0 beside a bow or a map, which have one.
-    pub fn loose_flatness(&self) -> f64 {
-        if self.bow.is_some() || self.flatness_map.is_some() {
-            0.0
-        } else {
-            self.flatness.unwrap_or(0.0)
-        }
-    }
-}
-
 impl Joint {
-    /// Gap between the two faces as they come together, before any force, at a point of the joint, m.
+    /// Gap between the two faces of an interface (0 is the warmest) as they come together, before any
+    /// force, at a point of the joint, m.
     ///
-    /// The sum over both faces of bow, flatness map (from its highest point down) and thermal sag.
+    /// The sum over both faces of bow, flatness map (from its highest point down) and thermal sag. A
+    /// plate between others is bent as a whole: what is concave on one side is convex on the other.
     /// A plane distance is no gap: the plates come together until they touch somewhere, so the
     /// result counts up to a constant and a tilt. Out-of-flatness that is stated without its shape,
     /// feet and the bending by bolts are not in it.
     ///
-    /// Checked: `gaps_of_both_faces_add`, `heat_opens_the_first_plate_and_domes_the_second`.
-    pub fn initial_gap(&self, point: [f64; 2]) -> f64 {
-        let faces = self.plates.iter().enumerate().map(|(index, plate)| {
-            let bow = plate.flatness_gap(point, plate.bow.unwrap_or(0.0));
+    /// Checked: `gaps_of_both_faces_add`, `heat_opens_the_first_plate_and_domes_the_second`,
+    /// `a_plate_between_others_is_bent_as_a_whole`.
+    pub fn initial_gap(&self, interface: usize, point: [f64; 2]) -> f64 {
+        let faces = [(interface, Facing::Cold), (interface + 1, Facing::Warm)];
+        let faces = faces.into_iter().map(|(index, facing)| {
+            let plate = &self.plates[index];
+            let between = index > 0 && index < self.plates.len() - 1;
+            let turned = if between && facing == Facing::Cold {
+                -1.0
+            } else {
+                1.0
+            };
+            let bow = plate.flatness_gap(point, turned * plate.bow.unwrap_or(0.0));
             let map = plate
                 .flatness_map
                 .as_ref()
                 .map_or(0.0, |map| map.highest() - map.height_at(plate.own(point)));
-            bow + map + plate.flatness_gap(point, self.sag_height(index))
+            bow + map + plate.flatness_gap(point, turned * self.sag_height(index))
         });
         faces.sum()
     }
@@ -84,7 +84,8 @@ impl Joint {
     }
 
     /// Curvature that temperatures give a plate (0 is the first), 1/m: positive concave at the
-    /// faying face, open in the middle; zero where no sag is stated.
+    /// faying face, open in the middle, of a plate between others at the face towards the warm side;
+    /// zero where no sag is stated.
     ///
     /// ```text
     /// flux:     κ = ± α q″/k
@@ -102,8 +103,8 @@ impl Joint {
     /// | `ΔT` | change of temperature since both were flat together | K |
     ///
     /// Signs: heat goes down. It makes the outer face of the first plate the hotter one, its centre
-    /// lifts, and the faying face is concave: `+`. Of the second plate the faying face is the
-    /// hotter one and domes towards the first: `−`. A layer that grows more than its plate makes
+    /// lifts, and the faying face is concave: `+`. Of every other plate the face towards the warm side
+    /// is the hotter one and domes towards it: `−`. A layer that grows more than its plate makes
     /// the faying face concave, whichever plate it lies on.
     ///
     /// Valid: a thin plate free to bend, the flux the same all over, `α` and `k` at room
@@ -180,9 +181,9 @@ mod tests {
             [0.08, 0.06, -5e-6],
         ])
         .map(Arc::new);
-        assert!(near(joint.initial_gap(CORNER), 0.0));
-        assert!(near(joint.initial_gap(CENTRE), 35e-6));
-        assert!(near(joint.initial_gap([0.08, 0.06]), 10e-6));
+        assert!(near(joint.initial_gap(0, CORNER), 0.0));
+        assert!(near(joint.initial_gap(0, CENTRE), 35e-6));
+        assert!(near(joint.initial_gap(0, [0.08, 0.06]), 10e-6));
     }
 
     #[test]
@@ -211,12 +212,31 @@ mod tests {
         joint.plates[1].sag = None;
         // The hot outer side lifts the centre: open in the middle by κ R²/2.
         let height = 0.5 * expected * 50e-3 * 50e-3;
-        assert!(near(joint.initial_gap(CENTRE), height));
-        assert!(near(joint.initial_gap(CORNER), 0.0));
+        assert!(near(joint.initial_gap(0, CENTRE), height));
+        assert!(near(joint.initial_gap(0, CORNER), 0.0));
         joint.plates.swap(0, 1);
         // The domed face touches in the middle and parts at the corners.
-        assert!(near(joint.initial_gap(CENTRE), 0.0));
-        assert!(near(joint.initial_gap(CORNER), height));
+        assert!(near(joint.initial_gap(0, CENTRE), 0.0));
+        assert!(near(joint.initial_gap(0, CORNER), height));
+    }
+
+    #[test]
+    fn a_plate_between_others_is_bent_as_a_whole() {
+        let mut joint = fixture::joint();
+        let mut shim = joint.plates[0].clone();
+        shim.bow = Some(20e-6);
+        shim.sag = Some(Sag::Flux(20e3));
+        joint.plates.insert(1, shim);
+        let height = 0.5 * joint.sag_curvature(1).abs() * 50e-3 * 50e-3;
+        assert!(joint.sag_curvature(1) < 0.0 && height < 20e-6);
+        // The bow opens the middle towards the warm side, the flux the corners.
+        assert!(near(joint.initial_gap(0, CENTRE), 20e-6));
+        assert!(near(joint.initial_gap(0, CORNER), height));
+        // Below it is the other way round, and both gaps together are even.
+        for point in [CORNER, CENTRE, [15e-3, 30e-3]] {
+            let both = joint.initial_gap(0, point) + joint.initial_gap(1, point);
+            assert!(near(both, 20e-6 + height), "{both}");
+        }
     }
 
     #[test]

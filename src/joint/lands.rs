@@ -3,6 +3,7 @@
 use crate::{
     diagnostic::Fault,
     joint::{
+        MOST_PLATES,
         collector::{Collector, Wording, fault},
         patches::Passing,
         plates::PlateDraft,
@@ -18,9 +19,9 @@ const SLACK: f64 = 1e-9;
 #[derive(Clone, Copy, Debug, Default)]
 pub(super) struct Land {
     /// Hole radius in each plate, m.
-    pub holes: [f64; 2],
+    pub holes: [f64; MOST_PLATES],
     /// Outer radius of the seat on the outer face of each plate, m.
-    pub seats: [f64; 2],
+    pub seats: [f64; MOST_PLATES],
     /// Plate on which the head sits.
     pub head_plate: usize,
 }
@@ -35,13 +36,16 @@ pub(super) struct Site {
 }
 
 /// Every hole and every seat must lie on its plate; one fault for each place is enough.
-pub(super) fn fit(site: &Site, plates: &[PlateDraft; 2], collector: &mut Collector) {
+pub(super) fn fit(site: &Site, plates: &[PlateDraft], collector: &mut Collector) {
     for (point, span) in &site.places {
         if collector.is_full() {
             return;
         }
-        let faults = [0, 1].map(|index| beyond(site.land, index, *point, &plates[index]));
-        if let Some(mut told) = faults.into_iter().flatten().next() {
+        let mut faults = plates
+            .iter()
+            .enumerate()
+            .filter_map(|(index, plate)| beyond(site.land, index, *point, plate));
+        if let Some(mut told) = faults.next() {
             told.span = span.clone();
             collector.report(told);
         }
@@ -133,8 +137,8 @@ pub(super) fn apart(sites: &[Site], collector: &mut Collector) {
                 break;
             }
             let distance = (place[0] - point[0]).hypot(place[1] - point[1]);
-            let meet = |one: [f64; 2], two: [f64; 2]| {
-                (0..2)
+            let meet = |one: [f64; MOST_PLATES], two: [f64; MOST_PLATES]| {
+                (0..MOST_PLATES)
                     .filter(|plate| one[*plate] > 0.0 && two[*plate] > 0.0)
                     .any(|plate| distance + SLACK < one[plate] + two[plate])
             };

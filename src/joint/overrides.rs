@@ -7,7 +7,7 @@ use crate::{
     joint::{
         collector::{Collector, Wording, fault},
         fields::{Kind, SPREAD_KEYS, Section, listed},
-        sections::{FILE, default_name},
+        sections::{FILE, default_name, own_name},
         tree::{Form, Key, Node, Span, short},
     },
 };
@@ -150,6 +150,11 @@ fn set_in(node: &mut Node, section: &'static Section, steps: &[Step], value: Wri
         ));
     }
     match (field.kind, rest) {
+        // A table that may be named in one word: a filler.
+        (Kind::List(inner), []) if inner.shorthand.is_some() => {
+            *slot(node, section, step)? = value.node(Kind::Table(inner));
+            Ok(())
+        }
         // Zones and openings are short: one or all of them may be set as a whole.
         (Kind::List(_), []) if !is_file(section) => {
             let list = slot(node, section, step)?;
@@ -324,12 +329,15 @@ fn element<'n, 's>(
     step: &Step,
     rest: &'s [Step],
 ) -> Result<(&'n mut Node, &'s [Step]), Box<Fault>> {
-    if step.index.is_some() {
-        return Ok((numbered(list, step)?, rest));
-    }
-    if let Form::Table(_) = list.form {
+    let made = section.shorthand.is_some()
+        && !matches!(&list.form, Form::List(nodes) if !nodes.is_empty());
+    if made || matches!(list.form, Form::Table(_)) {
+        // A table that may stand alone is made when it is absent, and opened when it is a plain value.
         let only = list.clone();
         list.form = Form::List(vec![only]);
+    }
+    if step.index.is_some() {
+        return Ok((numbered(list, step)?, rest));
     }
     let Form::List(nodes) = &mut list.form else {
         return Err(Box::new(bad(
@@ -342,8 +350,8 @@ fn element<'n, 's>(
         .iter()
         .enumerate()
         .filter_map(|(place, node)| {
-            let default = default_name(section, place);
-            node.text_of("name").or(default).map(str::to_owned)
+            let default = default_name(section, (place, count));
+            own_name(node, section).or(default).map(str::to_owned)
         })
         .collect();
     if let Some((name, after)) = rest.split_first()

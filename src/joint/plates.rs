@@ -1,26 +1,23 @@
-//! The two plates, where they lie on each other, where heat enters and leaves.
+//! The plates, their faces, where heat enters and leaves.
 
 use std::sync::Arc;
 
 use crate::{
     catalog::Material,
     joint::{
-        Finish, FlatnessMap, Outline, Plate, Sag,
+        Finish, FlatnessMap, MOST_PLATES, Outline, Plate, Sag, Underside,
         collector::{Collector, Wording, fault},
         finishes,
-        geometry::overlap,
         maps::Tables,
-        materials::{self, Own, duplicate},
+        materials::{self, Own},
         patches::{self, Parts},
         record::Record,
         sag,
-        sections::PLATE_NAMES,
+        sections::plate_name,
+        stacking,
         walk::missing,
     },
 };
-
-/// Plates this version reads.
-const COUNT: usize = 2;
 
 /// A plate as far as it could be read.
 #[derive(Debug)]
@@ -39,6 +36,8 @@ pub(super) struct PlateDraft {
     pub origin: Option<[f64; 2]>,
     /// Faying face.
     pub finish: Option<Finish>,
+    /// The face towards the cold side, where it is stated apart.
+    pub finish_below: Option<Finish>,
     /// Known bow, m.
     pub bow: Option<f64>,
     /// Measured map of the faying face.
@@ -61,12 +60,20 @@ impl PlateDraft {
         if lost("flatness_map", self.flatness_map.is_none()) || lost("sag", self.sag.is_none()) {
             return None;
         }
+        if lost("finish_below", self.finish_below.is_none()) {
+            return None;
+        }
         let parts = self.parts?;
+        let flatness = |key: &str| {
+            let finish = self.record.record(key)?;
+            finish.number("flatness")
+        };
         Some(Plate {
-            flatness: self
-                .record
-                .record("finish")
-                .and_then(|finish| finish.number("flatness")),
+            flatness: flatness("finish"),
+            underside: self.finish_below.map(|finish| Underside {
+                finish,
+                flatness: flatness("finish_below"),
+            }),
             name: self.name,
             material: self.material?,
             thickness: self.thickness?,
@@ -87,29 +94,30 @@ impl PlateDraft {
     }
 }
 
-/// Reads both plates; none when there are not two.
+/// Reads all plates, warm side first; none when there are less than two.
 pub(super) fn read(
     file: &Record,
     own: &Own,
     tables: &mut Tables<'_>,
     collector: &mut Collector,
-) -> Option<[PlateDraft; COUNT]> {
+) -> Option<Vec<PlateDraft>> {
     let records = file.records("plate");
     if !file.has("plate") || file.is_faulty("plate") {
         return None;
     }
-    if let Some(third) = records.get(COUNT) {
+    if let Some(beyond) = records.get(MOST_PLATES) {
         collector.report(
             fault(
                 "plate/count",
-                &third.place,
+                &beyond.place,
                 format!("the file has {} plates", records.len()),
             )
-            .expecting("this version reads two plates")
-            .help("join two plates at a time; a shim of metal is a [filler] of model \"layer\""),
+            .expecting(format!("expected at most {MOST_PLATES}"))
+            .help("a thin shim of metal may stand as a [filler] of model \"layer\""),
         );
+        return None;
     }
-    let [first, second, ..] = records else {
+    if records.len() < 2 {
         let place = records
             .first()
             .map_or_else(|| file.span("plate"), |only| only.place.clone());
@@ -117,51 +125,32 @@ pub(super) fn read(
             fault(
                 "plate/count",
                 &place,
-                format!("a joint has two plates; the file has {}", records.len()),
+                format!(
+                    "a joint has two plates or more; the file has {}",
+                    records.len()
+                ),
             )
-            .expecting("expected two [[plate]] tables")
+            .expecting("expected at least two [[plate]] tables")
             .help("the warm plate comes first"),
         );
         return None;
-    };
-    let mut upper = draft(first, PLATE_NAMES[0], own, collector);
-    let mut lower = draft(second, PLATE_NAMES[1], own, collector);
-    for draft in [&mut upper, &mut lower] {
+    }
+    let count = records.len();
+    let mut drafts: Vec<PlateDraft> = records
+        .iter()
+        .enumerate()
+        .map(|(index, record)| {
+            let name = plate_name((index, count)).unwrap_or("plate");
+            draft(record, name, own, collector)
+        })
+        .collect();
+    for draft in &mut drafts {
         draft.sag = sag::read(file, &draft.record, own, collector);
         draft.flatness_map = tables.flatness(&draft.record, draft.outline.as_ref(), collector);
     }
-    if first.has("feet") && second.has("feet") {
-        collector.report(
-            fault("plate/feet", &second.span("feet"), "both plates have feet")
-                .expecting("expected feet on one of the two")
-                .help(
-                    "feet stand on the plain face of the other plate: state them on one side only",
-                ),
-        );
-    }
-    if upper.name == lower.name {
-        collector.report(duplicate("plate", &lower.name, &second.span("name")));
-    }
-    misplaced(first, &["offset", "cooled"], "second", collector);
-    misplaced(second, &["heated"], "first", collector);
-    upper.origin = Some([0.0, 0.0]);
-    lower.origin = origin_of_second(&upper, &lower, collector);
-    if let (Some(above), Some(below)) = (upper.placed(), lower.placed())
-        && !overlap(above, below)
-    {
-        collector.report(
-            fault(
-                "plate/no-overlap",
-                &second.span("offset"),
-                "the plates do not lie on each other",
-            )
-            .expecting("expected a place on this plate")
-            .help("`offset` is where the corner (round: the centre; outline: the origin of its points) of the first plate lies on the second"),
-        );
-        // Without a place for it, no hole is told to lie beside this plate.
-        lower.origin = None;
-    }
-    Some([upper, lower])
+    stacking::check(records, &drafts, collector);
+    stacking::place(&mut drafts, collector);
+    Some(drafts)
 }
 
 fn draft(record: &Record, default_name: &str, own: &Own, collector: &mut Collector) -> PlateDraft {
@@ -173,16 +162,18 @@ fn draft(record: &Record, default_name: &str, own: &Own, collector: &mut Collect
             height
         })
     });
-    if let Some(finish) = record.record("finish")
-        && !finish.has("flatness")
-        && !record.has("bow")
-        && !record.has("flatness_map")
-    {
-        collector.assume(
-            finish.at("flatness"),
-            "flat",
-            "not stated; out-of-flatness opens the joint between the bolts",
-        );
+    for key in ["finish", "finish_below"] {
+        if let Some(finish) = record.record(key)
+            && !finish.has("flatness")
+            && !record.has("bow")
+            && !record.has("flatness_map")
+        {
+            collector.assume(
+                finish.at("flatness"),
+                "flat",
+                "not stated; out-of-flatness opens the joint between the bolts",
+            );
+        }
     }
     if record.has("bow") && record.has("flatness_map") {
         collector.report(two_ways(record, ["bow", "flatness_map"]));
@@ -195,7 +186,8 @@ fn draft(record: &Record, default_name: &str, own: &Own, collector: &mut Collect
         parts: patches::read(record, outline.as_ref(), collector),
         outline,
         origin: None,
-        finish: finishes::read(record, collector),
+        finish: finishes::read(record, "finish", collector),
+        finish_below: finishes::read(record, "finish_below", collector),
         bow,
         flatness_map: None,
         sag: None,
@@ -242,41 +234,4 @@ pub(super) fn two_ways(record: &Record, keys: [&str; 2]) -> crate::diagnostic::F
         format!("`{}` and `{}` are both stated", keys[0], keys[1]),
     )
     .expecting("expected one of the two")
-}
-
-fn misplaced(record: &Record, keys: &[&str], owner: &str, collector: &mut Collector) {
-    for key in keys.iter().filter(|key| record.has(key)) {
-        collector.report(
-            fault(
-                "plate/misplaced",
-                &record.span(key),
-                format!("`{key}` belongs to the {owner} plate"),
-            )
-            .expecting(format!("expected in the {owner} [[plate]]"))
-            .help("the warm plate comes first: it is heated, and it lies on the second, which is cooled"),
-        );
-    }
-}
-
-fn origin_of_second(
-    upper: &PlateDraft,
-    lower: &PlateDraft,
-    collector: &mut Collector,
-) -> Option<[f64; 2]> {
-    if let Some(offset) = lower.record.point("offset") {
-        return Some([0.0 - offset[0], 0.0 - offset[1]]);
-    }
-    if lower.record.has("offset") {
-        return None;
-    }
-    let (above, below) = (upper.outline.as_ref()?, lower.outline.as_ref()?);
-    if above != below {
-        collector.assume(
-            lower.record.at("offset"),
-            "centred",
-            "the plates differ in outline and no offset is stated",
-        );
-    }
-    let (centre, own) = (above.centre(), below.centre());
-    Some([centre[0] - own[0], centre[1] - own[1]])
 }

@@ -39,6 +39,8 @@ pub(super) enum Value {
     Spread(Spread),
     /// One value for each plate, by position or by name.
     PerPlate(PerPlate),
+    /// Two names, each with its place.
+    Names([(String, Span); 2]),
     /// A point, m.
     Point([f64; 2]),
     /// Points with their places.
@@ -77,10 +79,10 @@ pub(super) enum Width {
 /// A value for each plate.
 #[derive(Clone, Debug)]
 pub(super) enum PerPlate {
-    /// The same for both.
+    /// The same for all.
     Both(f64),
     /// By position.
-    Each(Point),
+    Each(Vec<f64>),
     /// By plate name, with the places of the names.
     Named(Vec<(String, Span, f64)>),
 }
@@ -164,6 +166,14 @@ impl Record {
     pub(super) fn per_plate(&self, key: &str) -> Option<&PerPlate> {
         match self.value(key)? {
             Value::PerPlate(values) => Some(values),
+            _ => None,
+        }
+    }
+
+    /// Two names.
+    pub(super) fn names(&self, key: &str) -> Option<&[(String, Span); 2]> {
+        match self.value(key)? {
+            Value::Names(names) => Some(names),
             _ => None,
         }
     }

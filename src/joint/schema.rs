@@ -7,6 +7,7 @@ use serde_json::{Value, json};
 use crate::{
     catalog,
     joint::{
+        MOST_PLATES,
         fields::{Catalogue, Field, Kind, Measure, Need, SPREAD_KEYS, Section},
         seats::HEADS,
         sections::FILE,
@@ -96,10 +97,11 @@ impl Parts {
                 let one = self.measure(of, field);
                 any(&[
                     one.clone(),
-                    list(&one, [2, 2]),
+                    list(&one, [2, MOST_PLATES]),
                     json!({ "type": "object", "additionalProperties": one }),
                 ])
             }
+            Kind::Names => list(&json!({ "type": "string", "minLength": 1 }), [2, 2]),
             Kind::Point => list(&self.quantity(Quantity::Length), [2, 2]),
             Kind::Points => {
                 let point = list(&self.quantity(Quantity::Length), [2, 2]);
@@ -123,7 +125,10 @@ impl Parts {
             }
             Kind::List(section) => {
                 let one = self.section(section);
-                any(&[json!({ "type": "array", "items": one, "minItems": 1 }), one])
+                let mut forms = vec![json!({ "type": "array", "items": one, "minItems": 1 }), one];
+                let short = section.shorthand.and_then(|key| section.field(key));
+                forms.extend(short.map(|short| self.kind(short.kind, short)));
+                any(&forms)
             }
         }
     }

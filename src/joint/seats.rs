@@ -5,8 +5,9 @@ mod parts;
 use crate::{
     catalog::{self, SeatRecord, Status, Thread},
     joint::{
-        Engagement, Seat,
+        Engagement, MOST_PLATES, Seat,
         collector::{Collector, Wording, fault},
+        contact::one_for_each,
         plates::PlateDraft,
         record::{PerPlate, Record},
         tree::short,
@@ -55,18 +56,18 @@ pub(super) struct Bolt<'a> {
     pub parts: Parts,
 }
 
-/// Reads the hole radius in each plate, m.
+/// Reads the hole radius in each plate, m; 0 beyond the last.
 pub(super) fn holes(
     bolt: Bolt<'_>,
-    plates: &[PlateDraft; 2],
+    plates: &[PlateDraft],
     collector: &mut Collector,
-) -> Option<[f64; 2]> {
-    let far = 1 - bolt.head_plate;
+) -> Option<[f64; MOST_PLATES]> {
+    let far = plates.len() - 1 - bolt.head_plate;
     let threaded = !matches!(bolt.engagement, Engagement::Nut);
     let stated = stated_holes(bolt, plates, collector)?;
-    let mut radii = [0.0; 2];
+    let mut radii = [0.0; MOST_PLATES];
     let mut assumed = None;
-    for (plate, radius) in radii.iter_mut().enumerate() {
+    for (plate, radius) in radii.iter_mut().take(plates.len()).enumerate() {
         let own = match plates[plate].record.number("hole") {
             None if plates[plate].record.has("hole") => return None,
             own => own,
@@ -112,7 +113,7 @@ pub(super) fn holes(
 
 /// Hole diameters as the fastener states them.
 #[derive(Clone, Copy, Debug)]
-struct StatedHoles([Option<f64>; 2]);
+struct StatedHoles([Option<f64>; MOST_PLATES]);
 
 impl StatedHoles {
     fn of(self, plate: usize) -> Option<f64> {
@@ -122,23 +123,30 @@ impl StatedHoles {
 
 fn stated_holes(
     bolt: Bolt<'_>,
-    plates: &[PlateDraft; 2],
+    plates: &[PlateDraft],
     collector: &mut Collector,
 ) -> Option<StatedHoles> {
     let record = bolt.record;
     match record.per_plate("hole") {
         None if record.has("hole") => None,
-        None => Some(StatedHoles([None; 2])),
-        Some(PerPlate::Each([first, last])) => Some(StatedHoles([Some(*first), Some(*last)])),
-        Some(PerPlate::Both(diameter)) => {
-            let mut both = [Some(*diameter); 2];
-            if !matches!(bolt.engagement, Engagement::Nut) {
-                both[1 - bolt.head_plate] = None;
+        None => Some(StatedHoles([None; MOST_PLATES])),
+        Some(PerPlate::Each(each)) => {
+            one_for_each(record, ("hole", each), plates, collector)?;
+            let mut diameters = [None; MOST_PLATES];
+            for (diameter, stated) in diameters.iter_mut().zip(each) {
+                *diameter = Some(*stated);
             }
-            Some(StatedHoles(both))
+            Some(StatedHoles(diameters))
+        }
+        Some(PerPlate::Both(diameter)) => {
+            let mut all = [Some(*diameter); MOST_PLATES];
+            if !matches!(bolt.engagement, Engagement::Nut) {
+                all[plates.len() - 1 - bolt.head_plate] = None;
+            }
+            Some(StatedHoles(all))
         }
         Some(PerPlate::Named(named)) => {
-            let mut diameters = [None; 2];
+            let mut diameters = [None; MOST_PLATES];
             for (name, span, diameter) in named {
                 let place = plates.iter().position(|plate| plate.name == *name);
                 let Some(place) = place else {
@@ -156,7 +164,7 @@ fn stated_holes(
 pub(super) fn unknown_plate(
     name: &str,
     span: &crate::joint::tree::Span,
-    plates: &[PlateDraft; 2],
+    plates: &[PlateDraft],
 ) -> crate::diagnostic::Fault {
     let names = || plates.iter().map(|plate| plate.name.as_str());
     fault(
@@ -190,8 +198,12 @@ fn medium_hole(bolt: Bolt<'_>, collector: &mut Collector) -> Option<f64> {
     Some(diameter)
 }
 
-/// Reads the seats of head and nut over known holes.
-pub(super) fn read(bolt: Bolt<'_>, holes: [f64; 2], collector: &mut Collector) -> Option<Seats> {
+/// Reads the seats of head and nut over holes of known radius, m.
+pub(super) fn read(
+    bolt: Bolt<'_>,
+    [near, far]: [f64; 2],
+    collector: &mut Collector,
+) -> Option<Seats> {
     let record = bolt.record;
     let head = bolt.parts.head;
     let bearing = record.number("bearing");
@@ -209,7 +221,6 @@ pub(super) fn read(bolt: Bolt<'_>, holes: [f64; 2], collector: &mut Collector) -
         );
     }
     let [head_washer, nut_washer] = bolt.parts.washers?;
-    let near = holes[bolt.head_plate];
     let conical = head.is_some_and(|head| head.kind == "countersunk") && bearing.is_none();
     let (head_seat, friction_radius) = match (bearing, head) {
         (Some(diameter), _) => {
@@ -219,7 +230,6 @@ pub(super) fn read(bolt: Bolt<'_>, holes: [f64; 2], collector: &mut Collector) -
         (None, Some(head)) => pressed(bolt, [Some(head), head_washer], near, collector)?,
         (None, None) => return None,
     };
-    let far = holes[1 - bolt.head_plate];
     let nut = match (bolt.engagement, bearing) {
         (Engagement::Nut, Some(diameter)) => Some(annulus(bolt, [2.0 * far, diameter], collector)?),
         (Engagement::Nut, None) => {

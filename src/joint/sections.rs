@@ -6,7 +6,11 @@ mod heat;
 mod plates;
 
 use crate::{
-    joint::fields::{Catalogue, Field, Kind, Measure, Section, field},
+    joint::{
+        MOST_PLATES,
+        fields::{Catalogue, Field, Kind, Measure, Section, field},
+        tree::Node,
+    },
     units::Quantity,
 };
 
@@ -21,19 +25,44 @@ pub use plates::{
 /// The newest format this version reads.
 pub const FORMAT: usize = 1;
 
-/// Names of plates that state none, in file order.
-pub const PLATE_NAMES: [&str; 2] = ["upper", "lower"];
+/// Names of two plates that state none, in file order.
+const PLATE_NAMES: [&str; 2] = ["upper", "lower"];
+
+/// Names of more plates than two that state none, in file order.
+const STACK_NAMES: [&str; MOST_PLATES] = ["first", "second", "third", "fourth", "fifth", "sixth"];
+
+/// Name of a plate that states none, by its place among all.
+pub(super) fn plate_name((index, count): (usize, usize)) -> Option<&'static str> {
+    if count > PLATE_NAMES.len() {
+        STACK_NAMES.get(index).copied()
+    } else {
+        PLATE_NAMES.get(index).copied()
+    }
+}
+
+/// Name by which other parts of the file and overrides call a table; that of a filler says what it
+/// is made of and calls nothing.
+pub(super) fn own_name<'n>(node: &'n Node, section: &Section) -> Option<&'n str> {
+    if section.name == FILLER.name {
+        None
+    } else {
+        node.text_of("name")
+    }
+}
 
 /// Name of a table that states none, by its place in its list.
-pub(super) fn default_name(section: &Section, index: usize) -> Option<&'static str> {
-    let names = (section.name == PLATE.name).then_some(PLATE_NAMES)?;
-    names.get(index).copied()
+pub(super) fn default_name(section: &Section, place: (usize, usize)) -> Option<&'static str> {
+    if section.name == PLATE.name {
+        plate_name(place)
+    } else {
+        None
+    }
 }
 
 /// The joint file.
 pub static FILE: Section = Section {
     name: "",
-    meaning: "a bolted joint of two plates",
+    meaning: "a bolted joint of two plates or a stack of more",
     shorthand: None,
     fields: &[
         field(
@@ -66,7 +95,7 @@ pub static FILE: Section = Section {
         field(
             "plate",
             Kind::List(&PLATE),
-            "the two plates, warm side first",
+            "the plates, warm side first; two to six",
             "[{ material = \"Al 6061-T6\", thickness = \"5 mm\", size = [\"80 mm\", \"80 mm\"], finish = \"milled\" }]",
         )
         .required(),
@@ -85,9 +114,9 @@ pub static FILE: Section = Section {
         .required(),
         field(
             "filler",
-            Kind::Table(&FILLER),
-            "paste, film, pad or foil between the plates",
-            "{ name = \"graphite foil\" }",
+            Kind::List(&FILLER),
+            "paste, film, pad or foil between the plates; one table for each interface that has one",
+            "[{ name = \"graphite foil\" }]",
         )
         .default("none: bare faces"),
         field(

@@ -134,6 +134,7 @@ impl Walk<'_> {
                 _ => self.spread(stated, Measure::Number).map(Value::Spread),
             },
             Kind::PerPlate(measure) => self.per_plate(stated, measure).map(Value::PerPlate),
+            Kind::Names => self.names(stated).map(Value::Names),
             Kind::Point => self.point(stated).map(Value::Point),
             Kind::Points => self.points(stated).map(Value::Points),
             Kind::Pairs(quantities) => {

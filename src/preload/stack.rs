@@ -1,7 +1,7 @@
 //! The clamped stack of a fastener in its joint: grip, compliance, guide settling.
 
 use crate::{
-    joint::{Engagement, Fastener, Isolating, Joint, Plate},
+    joint::{Engagement, Facing, Fastener, Isolating, Joint, Plate},
     preload::{
         losses::{Compliance, Contacts, Part, Working, guide_values, peak_to_valley},
         resilience::{
@@ -128,7 +128,8 @@ pub fn guide_settling(joint: &Joint, stack: &Stack) -> f64 {
     let roughest = joint
         .plates
         .iter()
-        .map(|plate| plate.finish.roughness.nominal)
+        .flat_map(|plate| [Facing::Warm, Facing::Cold].map(|side| plate.face(side)))
+        .map(|finish| finish.roughness.nominal)
         .fold(0.0, f64::max);
     guide_values(peak_to_valley(roughest), Working::Axial).of_stack(stack.contacts)
 }
@@ -169,7 +170,7 @@ fn parts_compliance(joint: &Joint, fastener: &Fastener, plates: &[(usize, f64)])
         .map(|&(index, thickness)| StackLayer {
             thickness,
             youngs_modulus: joint.plates[index].material.youngs_modulus.value,
-            hole_diameter: 2.0 * fastener.hole_radius[usize::from(index > 0)],
+            hole_diameter: 2.0 * fastener.hole_radius[index],
         })
         .collect();
     // A hole as wide as the seat leaves no cone; the reader refuses it, here it must only not divide by zero.
@@ -247,7 +248,7 @@ mod tests {
         fastener.thread = metric(10e-3, 1.5e-3);
         fastener.head_seat = seat;
         fastener.nut_seat = Some(seat);
-        fastener.hole_radius = [5.5e-3; 2];
+        fastener.hole_radius = vec![5.5e-3; 2];
         joint
     }
 

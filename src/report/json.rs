@@ -3,8 +3,8 @@
 use crate::{
     diagnostic::{Assumption, Caution},
     estimate::{
-        Band, BoltResult, CaseResult, Estimate, Met, PlaneResult, RequirementResult, RingRow,
-        TorqueSweep,
+        Band, BoltResult, CaseResult, Estimate, InterfaceResult, Met, PlaneResult,
+        RequirementResult, RingRow, TorqueSweep,
     },
     joint::{Limit, Plane, RequirementKind},
     report::{media::vacuum_over, number::inverse},
@@ -76,6 +76,10 @@ fn case(case: &CaseResult) -> Map<String, Value> {
         ("sink_temperature", json!(case.sink_temperature)),
         ("bolts", case.bolts.iter().map(bolt).collect()),
         ("pressure", pressure::pressure(case)),
+        (
+            "interfaces",
+            case.interfaces.iter().map(interface).collect(),
+        ),
         ("footprint", json!(case.footprint)),
         (
             "results",
@@ -126,6 +130,19 @@ fn bolt(bolt: &BoltResult) -> Value {
         "largest_torque": bolt.largest_torque,
         "contact_radius": bolt.contact_radius,
         "contact_conductance": bolt.contact_conductance,
+    })
+}
+
+/// An interface at nominal inputs; the drop is per watt through the joint.
+fn interface(interface: &InterfaceResult) -> Value {
+    json!({
+        "plates": interface.plates,
+        "contact_conductance": interface.contact,
+        "force": interface.force,
+        "peak": interface.peak,
+        "contact_area": interface.contact_area,
+        "gap_max": interface.gap_max,
+        "drop_per_watt": interface.drop,
     })
 }
 

@@ -2,7 +2,7 @@
 
 use crate::{
     estimate::{Chain, Realisation},
-    joint::{FillerKind, Friction, Joint, Medium, Tightening},
+    joint::{Finish, Friction, Medium, Tightening},
     numerics::special::normal_quantile,
 };
 
@@ -98,6 +98,12 @@ const CONDUCTIVITY: [Input; 2] = [
         reading: |at| at.conductivity[1],
     },
 ];
+const CONDUCTIVITY_BETWEEN: Input = Input {
+    name: "conductivity of the plates between",
+    remedy: "measure the conductivity (or the electrical conductivity) of their lots",
+    place: |at, u| at.conductivity_between = even(u),
+    reading: |at| at.conductivity_between,
+};
 const LAW: Input = Input {
     name: "law of the solid spots",
     remedy: "measure the joint, and state the points under [measured]",
@@ -182,36 +188,37 @@ pub fn inputs(chain: &Chain) -> Vec<Input> {
     if joint.measured.is_some() {
         found.push(MEASURED);
     }
-    if uses_spots(joint) {
+    let interfaces = 0..joint.interfaces();
+    let bare: Vec<usize> = interfaces.filter(|at| joint.is_bare(*at)).collect();
+    if !bare.is_empty() {
         for side in [0, 1] {
-            let finish = &joint.plates[side].finish;
-            if spread(&finish.roughness) {
+            let any = |holds: fn(&Finish) -> bool| {
+                bare.iter()
+                    .any(|interface| holds(joint.finishes(*interface)[side]))
+            };
+            if any(|finish| spread(&finish.roughness)) {
                 found.push(ROUGHNESS[side]);
             }
-            if finish.slope_factor > 1.0 {
+            if any(|finish| finish.slope_factor > 1.0) {
                 found.push(SLOPE[side]);
             }
         }
         found.push(HARDNESS);
         found.push(LAW);
     }
-    if joint
-        .filler
-        .as_ref()
-        .is_some_and(|filler| filler.factor > 1.0)
-    {
+    if joint.every_filler().any(|filler| filler.factor > 1.0) {
         found.push(FILLER);
     }
-    if joint.filler.is_none() && matches!(joint.service.medium, Medium::Gas { .. }) {
+    let open = (0..joint.interfaces()).any(|interface| joint.filler(interface).is_none());
+    if open && matches!(joint.service.medium, Medium::Gas { .. }) {
         found.push(GAS);
     }
     found.extend(CONDUCTIVITY);
+    if joint.plates.len() > 2 {
+        found.push(CONDUCTIVITY_BETWEEN);
+    }
     if chain.knows_the_gap() {
-        if joint
-            .plates
-            .iter()
-            .any(|plate| plate.loose_flatness() > 0.0)
-        {
+        if joint.most_loose_flatness() > 0.0 {
             found.push(FLATNESS);
         }
         found.push(FORM);
@@ -219,15 +226,6 @@ pub fn inputs(chain: &Chain) -> Vec<Input> {
         found.push(FIELD);
     }
     found
-}
-
-/// Whether the solid spots carry heat by a law.
-fn uses_spots(joint: &Joint) -> bool {
-    let bridged = joint
-        .filler
-        .as_ref()
-        .is_some_and(|filler| !matches!(filler.kind, FillerKind::Fluid { .. }));
-    joint.measured.is_none() && !bridged
 }
 
 fn spread(bounds: &crate::joint::Bounds) -> bool {

@@ -5,8 +5,9 @@ use ringsum::catalog;
 
 fn filler(lines: &str) -> FillerKind {
     read(&format!("{}\n[filler]\n{lines}\n", plain()))
-        .filler
+        .filler(0)
         .expect("a filler is stated")
+        .clone()
         .kind
 }
 
@@ -118,8 +119,9 @@ fn losses_not_asked_for_are_an_assumption() {
 fn a_layer_of_known_modulus_is_a_bed_of_springs() {
     let filler = |lines: &str| {
         read(&format!("{}\n[filler]\n{lines}\n", plain()))
-            .filler
+            .filler(0)
             .expect("a filler is stated")
+            .clone()
     };
     let stiffness = |lines: &str| filler(lines).stiffness();
     let close = |lines: &str, expected: f64| {

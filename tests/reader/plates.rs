@@ -163,7 +163,7 @@ fn either_plate_may_be_bowed() {
         assert!(near(plate.bow.expect("a bow is stated"), -20e-6));
     }
     // Both part at the corner.
-    assert!(near(joint.initial_gap([0.0, 0.0]), 40e-6));
+    assert!(near(joint.initial_gap(0, [0.0, 0.0]), 40e-6));
     assert!(joint.needs_elastic().is_empty());
 }
 
@@ -176,7 +176,7 @@ fn the_map_is_read_between_its_points() {
     assert!(near(map.height_at([0.04, 0.03]), 7e-6));
     assert!(near(map.highest(), 14e-6) && map.lowest().abs() < 1e-20);
     // The gap opens where the face is low.
-    assert!(near(joint.initial_gap([0.0, 0.0]), 14e-6));
+    assert!(near(joint.initial_gap(0, [0.0, 0.0]), 14e-6));
     assert!(!joint.is_flat());
     let scattered =
         "# probe\n\nZ (um); X (m); Y (inch)\n0; 0; 0\n8; 8e-2; 0\n6; 0; 2.362204724409449\r\n";

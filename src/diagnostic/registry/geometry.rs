@@ -97,15 +97,27 @@ pub(super) const ENTRIES: &[Entry] = &[
     ),
     fault(
         "plate/count",
-        "Not two plates",
-        "This version reads two plates, the warm one first.",
-        "Join two plates at a time. A shim between them is a [filler] of model \"layer\".",
+        "Too few or too many plates",
+        "A joint has two plates or a stack of up to six, the warm one first.",
+        "State every plate in a [[plate]] of its own. A thin shim may stand as a [filler] of model \"layer\".",
     ),
     fault(
         "plate/misplaced",
         "A key of the other plate",
-        "Heat enters the first plate and leaves the second, and `offset` says where the first lies on the second.",
-        "Put `heated` into the first [[plate]], `cooled` and `offset` into the second.",
+        "Heat enters the first plate and leaves the last, and `offset` says where the plate above lies on this one. \
+         A plate between others has two faying faces and no outer one: it has neither feet, ribs, map nor second \
+         layer, and no head sits on it; it alone has a `finish_below`.",
+        "Put `heated` into the first [[plate]], `cooled` into the last, `offset` into any but the first; heads sit \
+         on the first or the last.",
+    ),
+    fault(
+        "filler/interface",
+        "A filler or a measurement without its interface",
+        "Three plates have two interfaces, four have three. A filler lies in one of them, between two \
+         plates that lie on each other, and each interface has one filler at most. Own measurements \
+         stand for the one interface of two plates.",
+        "State `between = [\"base\", \"shim\"]` in each [[filler]]. State what was measured of a layer as \
+         its `table` of area resistance.",
     ),
     fault(
         "plate/not-round",

@@ -20,7 +20,10 @@ pub(super) const ENTRIES: &[Entry] = &[
              of conductance: 382 W/K for four M5 at 5 kN between two 80 × 80 × 5 mm aluminium plates. \
              `node to node` stands between the mean temperatures of the two whole plates. `added by \
              the joint` is what the joint costs against perfect contact: 0.278 K/W for the same \
-             plates in vacuum. `source to sink` is the whole path from heated zone to sink surface.",
+             plates in vacuum. `source to sink` is the whole path from heated zone to sink surface. In a \
+             stack of more than two plates `contact` is the series of its interfaces, 1/G = Σ 1/G_i; \
+             `node to node` stands between the first and the last plate; the drop across the faces \
+             is the sum over all interfaces; perfect contact is perfect in all of them.",
             "Meshed model with its own plates: give its faces the local h, or `contact` on the area \
              that touches; it makes its own spreading. Thermal network with one node per plate: \
              `node to node`. Requirement of kelvins at watts: `source to sink`, at the unfavourable \

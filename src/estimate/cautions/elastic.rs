@@ -7,7 +7,7 @@ use crate::{
         cautions::{caution, feet},
         group_label,
     },
-    joint::{FillerKind, Joint},
+    joint::{Filler, FillerKind, Joint, Plate},
 };
 
 /// Closure of a layer, as a share of its thickness, beyond which a bed of springs says little
@@ -40,17 +40,18 @@ pub(super) fn cautions(chain: &Chain, cases: &[CaseResult]) -> Vec<Caution> {
     for (fastener, _) in chain.groups() {
         found.extend(feet::head_off_foot(joint, fastener));
     }
-    found.extend(rigid_filler(joint));
+    found.extend(joint.every_filler().filter_map(rigid_filler));
     found
 }
 
-/// Whether a layer spreads the pressure.
+/// Whether layers spread the pressure in all interfaces.
 fn yields(joint: &Joint) -> bool {
-    let stiffness = joint
-        .filler
-        .as_ref()
-        .and_then(crate::joint::Filler::stiffness);
-    stiffness.is_some()
+    (0..joint.interfaces()).all(|interface| {
+        joint
+            .filler(interface)
+            .and_then(Filler::stiffness)
+            .is_some()
+    })
 }
 
 /// Faces that the bolts do not close.
@@ -86,21 +87,28 @@ fn stays_open(case: &CaseResult) -> Option<Caution> {
 
 /// Contact pressure beyond the yield of a plate, or beyond what a layer can be squeezed.
 fn limits(joint: &Joint, case: &CaseResult) -> Vec<Caution> {
-    let peak = case.pressure.peak;
+    let interfaces = case.interfaces.iter().enumerate();
+    interfaces
+        .flat_map(|(interface, told)| limits_of((joint, interface), case.name, told.peak))
+        .collect()
+}
+
+fn limits_of((joint, interface): (&Joint, usize), case: &str, peak: f64) -> Vec<Caution> {
     let mut found = Vec::new();
-    if let Some((name, strength)) = softest(joint).filter(|(_, strength)| peak > *strength) {
+    let softest = softest(joint.meeting(interface));
+    if let Some((name, strength)) = softest.filter(|(_, strength)| peak > *strength) {
         found.push(caution(
             LIMITS,
             format!(
                 "{} case: the faces press up to {:.0} MPa on {name}, which yields at {:.0} MPa: the elastic field no \
                  longer holds there",
-                case.name,
+                case,
                 peak * 1e-6,
                 strength * 1e-6
             ),
         ));
     }
-    let layer = joint.filler.as_ref();
+    let layer = joint.filler(interface);
     if let Some((filler, modulus)) = layer.and_then(|filler| Some((filler, filler.modulus?)))
         && peak > SQUEEZED * modulus
     {
@@ -109,7 +117,7 @@ fn limits(joint: &Joint, case: &CaseResult) -> Vec<Caution> {
             format!(
                 "{} case: {} would be squeezed by {:.0} % of its thickness at {:.2} MPa: a real layer stiffens, flows or \
                  needs stops long before, and the load spreads less than told",
-                case.name,
+                case,
                 filler.name,
                 100.0 * peak / modulus,
                 peak * 1e-6
@@ -122,8 +130,8 @@ fn limits(joint: &Joint, case: &CaseResult) -> Vec<Caution> {
 const LIMITS: &str = "pressure/elastic-limits";
 
 /// The plate that yields first, with its yield strength, Pa.
-fn softest(joint: &Joint) -> Option<(&str, f64)> {
-    let strengths = joint.plates.iter().filter_map(|plate| {
+fn softest(plates: [&Plate; 2]) -> Option<(&str, f64)> {
+    let strengths = plates.into_iter().filter_map(|plate| {
         let strength = plate.material.yield_strength.as_ref()?.value;
         Some((plate.name.as_str(), strength))
     });
@@ -168,8 +176,7 @@ fn seats_yield(chain: &Chain) -> Vec<Caution> {
 }
 
 /// A layer that conducts but does not spread the pressure, for want of its modulus.
-fn rigid_filler(joint: &Joint) -> Option<Caution> {
-    let filler = joint.filler.as_ref()?;
+fn rigid_filler(filler: &Filler) -> Option<Caution> {
     let layer = match filler.kind {
         FillerKind::Layer { .. } | FillerKind::Table { .. } => true,
         FillerKind::Fluid { .. } | FillerKind::Paste { .. } => false,

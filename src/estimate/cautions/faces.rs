@@ -3,8 +3,8 @@
 use crate::{
     catalog::{self, MaterialKind},
     diagnostic::Caution,
-    estimate::{CaseResult, State, cautions::caution, surfaces},
-    joint::{Joint, Plate},
+    estimate::{CaseResult, State, cautions::caution},
+    joint::{Finish, Joint, Plate},
 };
 
 /// Roughness range of the slope rule, m.
@@ -21,14 +21,15 @@ pub(super) fn conductance_cautions(
     state: &State,
     cases: &[CaseResult],
 ) -> Vec<Caution> {
-    let peak = cases.first().map_or(0.0, |case| case.pressure.peak);
-    let mut found = state.conditions.faces.local.cautions(peak);
-    if !surfaces::bridged(joint) {
-        let by_rule: Vec<&Plate> = joint
-            .plates
-            .iter()
-            .filter(|plate| plate.finish.slope_factor >= BY_RULE)
-            .collect();
+    let mut found = Vec::new();
+    for (interface, faces) in state.conditions.faces.iter().enumerate() {
+        let told = cases
+            .first()
+            .and_then(|case| case.interfaces.get(interface));
+        found.extend(faces.local.cautions(told.map_or(0.0, |told| told.peak)));
+    }
+    if (0..joint.interfaces()).any(|interface| joint.is_bare(interface)) {
+        let by_rule: Vec<&Plate> = with_bare_face(joint, |finish| finish.slope_factor >= BY_RULE);
         if !by_rule.is_empty() {
             found.push(caution(
                 "conductance/finish-not-measured",
@@ -39,13 +40,10 @@ pub(super) fn conductance_cautions(
                 ),
             ));
         }
-        let outside: Vec<&Plate> = by_rule
-            .into_iter()
-            .filter(|plate| {
-                let rq = plate.finish.roughness.nominal;
-                !(SLOPE_RULE[0]..=SLOPE_RULE[1]).contains(&rq)
-            })
-            .collect();
+        let outside: Vec<&Plate> = with_bare_face(joint, |finish| {
+            let rq = finish.roughness.nominal;
+            finish.slope_factor >= BY_RULE && !(SLOPE_RULE[0]..=SLOPE_RULE[1]).contains(&rq)
+        });
         if !outside.is_empty() {
             found.push(caution(
                 "conductance/slope-range",
@@ -56,12 +54,11 @@ pub(super) fn conductance_cautions(
             ));
         }
     }
-    if let Some(record) = joint
-        .filler
-        .as_ref()
-        .and_then(|filler| catalog::filler(&filler.name))
-        && record.creeps
-    {
+    let records = joint.every_filler();
+    for record in records.filter_map(|filler| catalog::filler(&filler.name)) {
+        if !record.creeps {
+            continue;
+        }
         found.push(caution(
             "filler/creep",
             format!(
@@ -72,6 +69,23 @@ pub(super) fn conductance_cautions(
         ));
     }
     found
+}
+
+/// Plates of which a face of such a finish meets another bare.
+fn with_bare_face(joint: &Joint, holds: impl Fn(&Finish) -> bool) -> Vec<&Plate> {
+    let plates = joint.plates.iter().enumerate();
+    let told = |(index, _): &(usize, &Plate)| {
+        let beside = [
+            (index.checked_sub(1), 1),
+            (Some(*index).filter(|at| *at < joint.interfaces()), 0),
+        ];
+        beside.into_iter().any(|(interface, side)| {
+            interface.is_some_and(|interface| {
+                joint.is_bare(interface) && holds(joint.finishes(interface)[side])
+            })
+        })
+    };
+    plates.filter(told).map(|(_, plate)| plate).collect()
 }
 
 pub(super) fn material_cautions(joint: &Joint) -> Vec<Caution> {
@@ -110,7 +124,7 @@ pub(super) fn material_cautions(joint: &Joint) -> Vec<Caution> {
             ));
         }
     }
-    found.extend(galvanic(joint));
+    found.extend((0..joint.interfaces()).filter_map(|interface| galvanic(joint, interface)));
     found
 }
 
@@ -128,9 +142,11 @@ const GALVANIC: &[[&str; 2]] = &[
     ["copper", "zinc"],
 ];
 
-fn galvanic(joint: &Joint) -> Option<Caution> {
-    let family = |plate: &Plate| {
-        plate.finish.coating.as_ref().map_or_else(
+fn galvanic(joint: &Joint, interface: usize) -> Option<Caution> {
+    let [above, below] = joint.meeting(interface);
+    let [upper, lower] = joint.finishes(interface);
+    let family = |plate: &Plate, finish: &Finish| {
+        finish.coating.as_ref().map_or_else(
             || plate.material.family.clone(),
             |coating| match coating.plating.family.as_str() {
                 "" => plate.material.family.clone(),
@@ -138,7 +154,7 @@ fn galvanic(joint: &Joint) -> Option<Caution> {
             },
         )
     };
-    let [warm, cold] = [family(joint.warm()), family(joint.cold())];
+    let [warm, cold] = [family(above, upper), family(below, lower)];
     let pair = GALVANIC.iter().find(|pair| {
         (pair[0] == warm && pair[1] == cold) || (pair[0] == cold && pair[1] == warm)
     })?;

@@ -93,7 +93,8 @@ fn cone_cautions(chain: &Chain, cells: &Cells) -> Vec<Caution> {
         ));
     }
     let gas = matches!(joint.service.medium, Medium::Gas { .. });
-    if joint.filler.is_none() && gas && chain.gas_share().is_ok_and(|share| share > GAS_MATTERS) {
+    if joint.filler(0).is_none() && gas && chain.gas_share().is_ok_and(|share| share > GAS_MATTERS)
+    {
         found.push(caution(
             GAP_IGNORED,
             "between the bolts the cone keeps the faces at the distance of their roughness; really the plates part by \
@@ -101,11 +102,7 @@ fn cone_cautions(chain: &Chain, cells: &Cells) -> Vec<Caution> {
              joint added 1.4 and 1.8 times as much): go by the upper end of the band",
         ));
     }
-    if joint
-        .filler
-        .as_ref()
-        .is_some_and(|filler| !matches!(filler.kind, FillerKind::Fluid { .. }))
-    {
+    if joint.is_layered(0) {
         found.push(caution(
             "pressure/filler-spreads",
             "the pressure is that of bare plates; a layer between them spreads the load, so that there is less pressure \
@@ -159,7 +156,7 @@ fn seat_cautions(fastener: &Fastener) -> Vec<Caution> {
         ));
     }
     if let Some(hole) = catalog::clearance_hole(&fastener.thread.name) {
-        let widest = fastener.hole_radius[0].max(fastener.hole_radius[1]);
+        let widest = fastener.widest_hole();
         if 2.0 * widest > hole.diameters[2] * 1.001 {
             found.push(caution(
                 "pressure/large-hole",
@@ -218,7 +215,7 @@ fn flatness_decides(joint: &Joint) -> bool {
         .iter()
         .map(|plate| plate.bow.map_or(plate.flatness.unwrap_or(0.0), f64::abs))
         .sum();
-    let layer = joint.filler.as_ref().and_then(|filler| match filler.kind {
+    let layer = joint.filler(0).and_then(|filler| match filler.kind {
         FillerKind::Layer { thickness, .. } => Some(thickness),
         FillerKind::Paste { applied, .. } => Some(applied),
         FillerKind::Fluid { .. } | FillerKind::Table { .. } => None,

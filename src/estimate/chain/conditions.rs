@@ -18,29 +18,32 @@ const SHANK_ENDS: f64 = 0.9;
 pub struct Conditions {
     /// Clamp force of each bolt in service, N.
     pub forces: Vec<f64>,
-    /// The faces: local conductance against pressure.
-    pub faces: Faces,
+    /// The faces of each interface, from warm to cold: local conductance against pressure.
+    pub faces: Vec<Faces>,
     /// Mean temperature of the sink surface, K.
     pub temperature: f64,
-    /// Conductivity of both plates, W/(m K); in the plane where that through a plate differs.
-    pub conductivity: [f64; 2],
+    /// Conductivity of each plate, W/(m K); in the plane where that through a plate differs.
+    pub conductivity: Vec<f64>,
     /// Conductance of each shank, W/K.
     pub shanks: Vec<f64>,
 }
 
 impl Conditions {
-    /// The same as the networks take it.
+    /// The same as the networks take it, which know two plates.
     pub fn load(&self) -> Load<'_, impl Fn(f64) -> f64> {
         Load {
-            conductance: |pressure: f64| self.faces.conductance(pressure),
-            conductivity: self.conductivity,
+            conductance: |pressure: f64| self.faces[0].conductance(pressure),
+            conductivity: [
+                self.conductivity[0],
+                self.conductivity[self.conductivity.len() - 1],
+            ],
             forces: &self.forces,
             shanks: &self.shanks,
         }
     }
 }
 
-/// The faces of a joint at one realisation.
+/// The faces of an interface at one realisation.
 #[derive(Clone, Debug)]
 pub struct Faces {
     /// The laws.
@@ -71,6 +74,20 @@ impl Faces {
     }
 }
 
+impl Conditions {
+    /// The same without gas in the gaps; none where there is none.
+    pub(super) fn without_gas(&self) -> Option<Self> {
+        let mut empty = self.clone();
+        let mut any = false;
+        for faces in &mut empty.faces {
+            let mut interface = faces.local.interface().clone();
+            any |= interface.gas.take().is_some();
+            faces.local = interface.prepare();
+        }
+        any.then_some(empty)
+    }
+}
+
 impl Chain<'_> {
     /// Forces, faces and conductivities of one case at one realisation: all that heat meets.
     pub(super) fn conditions(&self, case: usize, at: &Realisation) -> Result<Conditions, Failure> {
@@ -83,21 +100,21 @@ impl Chain<'_> {
             .collect();
         let forces: Vec<f64> = self.group_of.iter().map(|group| by_group[*group]).collect();
         let temperature = joint.service.cases[case].temperature;
-        let interface = surfaces::interface(joint, case, at)?;
-        let per_pascal = self
-            .force_law(&forces, temperature)
-            .map(|law| law * interface.solid_factor);
+        let law = self.force_law(&forces, temperature);
+        let faces = (0..joint.interfaces())
+            .map(|index| {
+                let interface = surfaces::interface(joint, (case, index), at)?;
+                Ok(Faces {
+                    local: interface.prepare(),
+                    per_pascal: law.map(|law| law * interface.solid_factor),
+                })
+            })
+            .collect::<Result<Vec<Faces>, Failure>>()?;
         Ok(Conditions {
             forces,
-            faces: Faces {
-                local: interface.prepare(),
-                per_pascal,
-            },
+            faces,
             temperature,
-            conductivity: [
-                surfaces::conductivity(joint.warm(), temperature, at.conductivity[0])?,
-                surfaces::conductivity(joint.cold(), temperature, at.conductivity[1])?,
-            ],
+            conductivity: surfaces::conductivities(joint, case, at)?,
             shanks: self.shanks(temperature)?,
         })
     }

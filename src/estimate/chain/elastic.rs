@@ -12,9 +12,9 @@ mod variant;
 use std::sync::{Arc, OnceLock};
 
 use crate::{
-    conductance,
     estimate::{
-        Chain, ConeBeside, Failure, Fineness, Meeting, PressureResult, Realisation, RingRow, Watch,
+        Chain, ConeBeside, Failure, Fineness, InterfaceResult, Meeting, PressureResult,
+        Realisation, RingRow, Watch,
         chain::{PressedEdge, conditions::Conditions},
     },
     joint::{Joint, Medium},
@@ -156,6 +156,16 @@ impl ElasticModel {
         let first = &self.case(chain, 0)?.conditions;
         let flatness = self.solver.flatness(chain.joint(), self.level(), first)?;
         Ok(solved.pressure(flatness, cone_beside(chain, case)?))
+    }
+
+    /// Every interface of a case at nominal.
+    pub(super) fn interfaces(
+        &self,
+        chain: &Chain,
+        case: usize,
+    ) -> Result<Vec<InterfaceResult>, Failure> {
+        let (_, solved) = self.closed(chain, case)?;
+        Ok(solved.interfaces(chain.joint()))
     }
 
     /// Where the contact of a case reaches an edge of plate or foot.
@@ -308,13 +318,9 @@ impl ElasticModel {
     /// Share of what the gas takes off the joint's resistance.
     pub(super) fn gas_share(&self, chain: &Chain) -> Result<f64, Failure> {
         let (case, solved) = self.closed(chain, 0)?;
-        let mut empty = case.conditions.clone();
-        let mut interface: conductance::Interface = empty.faces.local.interface().clone();
-        if interface.gas.is_none() {
+        let Some(empty) = case.conditions.without_gas() else {
             return Ok(0.0);
-        }
-        interface.gas = None;
-        empty.faces.local = interface.prepare();
+        };
         let empty = self.solved(
             chain,
             (self.level(), Variant::Stated),

@@ -42,7 +42,7 @@ impl ConeModel {
         if chain.joint().fasteners.iter().any(tapped) {
             high += TAPPED;
         }
-        high = if chain.joint().filler.is_some() {
+        high = if chain.joint().filler(0).is_some() {
             high.max(OPEN_LAYER)
         } else {
             high + self.gas_share(chain)? * Self::gap_growth(chain)?
@@ -61,7 +61,7 @@ impl ConeModel {
     /// ```
     fn gap_growth(chain: &Chain) -> Result<f64, Failure> {
         let conditions = chain.conditions(0, &Realisation::default())?;
-        let local = &conditions.faces.local;
+        let local = &conditions.faces[0].local;
         let Some(gas) = local.interface().gas else {
             return Ok(0.0);
         };
@@ -82,12 +82,12 @@ impl ConeModel {
         if matches!(chain.joint().service.medium, Medium::Vacuum) {
             return Ok(0.0);
         }
-        let mut conditions = chain.conditions(0, &Realisation::default())?;
+        let conditions = chain.conditions(0, &Realisation::default())?;
+        let Some(bare) = conditions.without_gas() else {
+            return Ok(0.0);
+        };
         let filled = self.geometry.cells.solve(&conditions.load()).added_by_joint;
-        let mut interface = conditions.faces.local.interface().clone();
-        interface.gas = None;
-        conditions.faces.local = interface.prepare();
-        let empty = self.geometry.cells.solve(&conditions.load()).added_by_joint;
+        let empty = self.geometry.cells.solve(&bare.load()).added_by_joint;
         let share = 1.0 - filled / empty;
         Ok(if share.is_finite() {
             share.clamp(0.0, 1.0)

@@ -40,7 +40,7 @@ impl Geometry {
             .zip(&cones)
             .map(|((fastener, at), cone)| Site {
                 at,
-                hole_radius: fastener.hole_radius,
+                hole_radius: fastener.outer_holes(),
                 cone: *cone,
             })
             .collect();
@@ -72,14 +72,13 @@ impl Geometry {
 /// Where head and nut press on different annuli the smaller counts: it makes the contact smaller.
 fn pair(joint: &Joint, fastener: &Fastener, place: [f64; 2]) -> Pair {
     let plates = [joint.warm(), joint.cold()];
-    let [hole_1, hole_2] = fastener.hole_radius;
     let head = fastener.head_seat.outer_radius;
     let bearing_radius = match (fastener.engagement, fastener.nut_seat) {
         (Engagement::Nut, Some(nut)) => head.min(nut.outer_radius),
         _ => head,
     };
     Pair {
-        hole_radius: hole_1.max(hole_2),
+        hole_radius: fastener.widest_hole(),
         bearing_radius,
         rim_radius: plates
             .map(|plate| rim(plate, place))

@@ -15,7 +15,7 @@ pub const LARGE_ERROR: f64 = 0.05;
 /// What the plan grid makes of the cells' answer in one case.
 #[derive(Clone, Debug)]
 pub(super) struct Level {
-    conductivity: [f64; 2],
+    conductivity: Vec<f64>,
     perfect: Perfect,
     pub(super) calibration: Calibration,
 }
@@ -41,7 +41,7 @@ impl ConeModel {
                 level
                     .conductivity
                     .iter()
-                    .zip(nominal.conductivity)
+                    .zip(&nominal.conductivity)
                     .all(|(one, other)| (one / other - 1.0).abs() < ALIKE)
             });
             if let Some(level) = alike.cloned() {
@@ -60,7 +60,7 @@ impl ConeModel {
                 None => grid.solve_both(&load).map_err(failed)?,
             };
             known.push(Level {
-                conductivity: nominal.conductivity,
+                conductivity: nominal.conductivity.clone(),
                 perfect,
                 calibration: Calibration::between(&cells, &path).map_err(failed)?,
             });

@@ -20,11 +20,15 @@ pub struct Plate {
     pub outline: Outline,
     /// Where the plate's own origin lies in joint coordinates, m.
     pub origin: [f64; 2],
-    /// The faying face.
+    /// The faying face; of a plate between others the one towards the warm side, and the other as
+    /// well unless `underside` says otherwise.
     pub finish: Finish,
     /// Stated total out-of-flatness of the faying face, m.
     pub flatness: Option<f64>,
-    /// Height of a known bow, m: positive concave (open at the centre), negative convex.
+    /// The face towards the cold side of a plate between others, where it differs.
+    pub underside: Option<Underside>,
+    /// Height of a known bow, m: positive concave (open at the centre), negative convex. A plate
+    /// between others is bent as a whole, as its face towards the warm side shows it.
     pub bow: Option<f64>,
     /// Measured heights of the faying face, in place of a bow.
     pub flatness_map: Option<Arc<FlatnessMap>>,
@@ -36,6 +40,24 @@ pub struct Plate {
     pub feet: Option<Feet>,
     /// Parts of larger thickness on the outer face.
     pub ribs: Vec<Rib>,
+}
+
+/// The face towards the cold side of a plate between others.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Underside {
+    /// Roughness, slope and plating.
+    pub finish: Finish,
+    /// Stated total out-of-flatness, m.
+    pub flatness: Option<f64>,
+}
+
+/// Which way a faying face looks.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Facing {
+    /// Towards the first plate.
+    Warm,
+    /// Towards the last plate.
+    Cold,
 }
 
 /// Shape in plan.

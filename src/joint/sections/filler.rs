@@ -19,7 +19,7 @@ const fn scatter(meaning: &'static str) -> Field {
     .within(0.0, 9.0)
 }
 
-/// `[filler]`.
+/// `[[filler]]`.
 pub static FILLER: Section = Section {
     name: "filler",
     meaning: "paste, film, pad or foil between the plates",
@@ -31,6 +31,13 @@ pub static FILLER: Section = Section {
             "filler of the catalogue, or a name of your own with a model",
             "\"graphite foil\"",
         ),
+        field(
+            "between",
+            Kind::Names,
+            "plates between which it lies; a stack of more than two asks for them",
+            "[\"base\", \"shim\"]",
+        )
+        .default("the two plates"),
         field(
             "model",
             Kind::Choice(&["fluid", "layer", "paste", "table"]),

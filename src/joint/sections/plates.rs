@@ -15,7 +15,7 @@ const fn length(key: &'static str, meaning: &'static str, example: &'static str)
 /// `[[plate]]`.
 pub static PLATE: Section = Section {
     name: "plate",
-    meaning: "one of the two plates, warm side first",
+    meaning: "one of the plates, warm side first",
     shorthand: None,
     fields: &[
         field(
@@ -24,7 +24,7 @@ pub static PLATE: Section = Section {
             "name by which other tables and results call the plate",
             "\"panel\"",
         )
-        .default("upper for the first plate, lower for the second"),
+        .default("upper and lower; of more than two first, second, third and so on"),
         field(
             "material",
             Kind::Table(&MATERIAL_INLINE),
@@ -72,7 +72,7 @@ pub static PLATE: Section = Section {
         field(
             "offset",
             Kind::Point,
-            "second plate only: where the corner (round: the centre; outline: the origin of its points) of the first plate lies on it",
+            "not of the first plate: where the corner (round: the centre; outline: the origin of its points) of the plate above lies on it",
             "[\"70 mm\", \"90 mm\"]",
         )
         .within(-100.0, 100.0)
@@ -80,10 +80,17 @@ pub static PLATE: Section = Section {
         field(
             "finish",
             Kind::Table(&FINISH),
-            "the faying face: a process, or a table",
+            "the faying face: a process, or a table; of a plate between others both faces",
             "{ roughness = \"Ra 0.8 µm\", flatness = \"0.1 mm\" }",
         )
         .required(),
+        field(
+            "finish_below",
+            Kind::Table(&FINISH),
+            "plate between others only: its face towards the cold side, where it differs from `finish`",
+            "{ roughness = \"Ra 1.6 µm\", plating = \"anodic film\" }",
+        )
+        .default("as finish"),
         field(
             "emissivity",
             Kind::Number,
@@ -95,7 +102,7 @@ pub static PLATE: Section = Section {
         field(
             "bow",
             Kind::Table(&BOW),
-            "known bow of the faying face",
+            "known bow of the faying face; a plate between others is bent as a whole, as its face towards the warm side shows it",
             "{ kind = \"concave\", height = \"30 µm\" }",
         ),
         field(
@@ -125,7 +132,7 @@ pub static PLATE: Section = Section {
         field(
             "cooled",
             Kind::List(&COOLED),
-            "second plate only: where heat leaves; one table, or several cooled to one temperature",
+            "last plate only: where heat leaves; one table, or several cooled to one temperature",
             "{ film = \"500 W/(m²·K)\" }",
         )
         .default("the whole back at one temperature"),

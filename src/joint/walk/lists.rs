@@ -1,12 +1,13 @@
 //! Repeated tables, points, pairs, values per plate.
 
 use crate::{
+    diagnostic::Fault,
     joint::{
-        MOST_PLACES,
+        MOST_PLACES, MOST_PLATES,
         collector::{Wording, fault},
         fields::{Measure, Section},
         record::{PerPlate, Point, Record},
-        sections::default_name,
+        sections::{default_name, own_name},
         tree::{Form, Key, Node, Span},
         walk::{Stated, Walk, too_many, wrong_type},
     },
@@ -36,6 +37,8 @@ impl Walk<'_> {
                 return None;
             }
             Form::Table(_) => std::slice::from_ref(stated.node),
+            // A plain value stands for the shorthand of the table.
+            _ if section.shorthand.is_some() => std::slice::from_ref(stated.node),
             _ => {
                 self.collector.report(
                     wrong_type(stated.node, &format!("`{}`", stated.field.key), "a table").help(
@@ -54,13 +57,13 @@ impl Walk<'_> {
         }
         let mut records = Vec::with_capacity(nodes.len());
         for (index, node) in nodes.iter().enumerate() {
-            let name = node.text_of("name").or(default_name(section, index));
+            let name = own_name(node, section).or(default_name(section, (index, nodes.len())));
             let path = match name {
                 Some(name) => format!("{}.{name}", stated.path),
                 None if nodes.len() == 1 => stated.path.to_owned(),
                 None => format!("{}[{}]", stated.path, index + 1),
             };
-            if matches!(node.form, Form::Table(_)) {
+            if matches!(node.form, Form::Table(_)) || section.shorthand.is_some() {
                 records.extend(self.record(node, section, &path));
             } else {
                 self.collector
@@ -96,7 +99,19 @@ impl Walk<'_> {
 
     pub(super) fn per_plate(&mut self, stated: Stated<'_>, measure: Measure) -> Option<PerPlate> {
         match &stated.node.form {
-            Form::List(nodes) => self.two(stated, nodes, [measure; 2]).map(PerPlate::Each),
+            Form::List(nodes) if nodes.len() > 2 && nodes.len() <= MOST_PLATES => {
+                let values = nodes
+                    .iter()
+                    .map(|node| self.single(Stated { node, ..stated }, measure));
+                let values: Vec<Option<f64>> = values.collect();
+                values
+                    .into_iter()
+                    .collect::<Option<Vec<f64>>>()
+                    .map(PerPlate::Each)
+            }
+            Form::List(nodes) => self
+                .two(stated, nodes, [measure; 2])
+                .map(|two| PerPlate::Each(two.to_vec())),
             Form::Table(entries) => {
                 let mut named = Vec::with_capacity(entries.len());
                 for (key, node) in entries {
@@ -107,6 +122,23 @@ impl Walk<'_> {
             }
             _ => self.single(stated, measure).map(PerPlate::Both),
         }
+    }
+
+    pub(super) fn names(&mut self, stated: Stated<'_>) -> Option<[(String, Span); 2]> {
+        let Form::List(nodes) = &stated.node.form else {
+            self.wrong(stated);
+            return None;
+        };
+        let [first, second] = nodes.as_slice() else {
+            self.collector.report(not_two(stated, nodes.len()));
+            return None;
+        };
+        let mut name = |node: &Node| {
+            let text = self.text(Stated { node, ..stated });
+            text.map(|text| (text, node.span.clone()))
+        };
+        let (first, second) = (name(first), name(second));
+        Some([first?, second?])
     }
 
     pub(super) fn point(&mut self, stated: Stated<'_>) -> Option<Point> {
@@ -159,19 +191,7 @@ impl Walk<'_> {
 
     fn two(&mut self, stated: Stated<'_>, nodes: &[Node], measures: [Measure; 2]) -> Option<Point> {
         let [first, second] = nodes else {
-            self.collector.report(
-                fault(
-                    "file/wrong-type",
-                    &stated.node.span,
-                    format!(
-                        "`{}` has {} values here; it takes two",
-                        stated.field.key,
-                        nodes.len()
-                    ),
-                )
-                .expecting("two values")
-                .help(format!("for example `{}`", stated.field.line())),
-            );
+            self.collector.report(not_two(stated, nodes.len()));
             return None;
         };
         let first = self.single(
@@ -198,6 +218,20 @@ impl Walk<'_> {
         }
         count <= MOST_PLACES
     }
+}
+
+/// A list of another length than two.
+fn not_two(stated: Stated<'_>, count: usize) -> Fault {
+    fault(
+        "file/wrong-type",
+        &stated.node.span,
+        format!(
+            "`{}` has {count} values here; it takes two",
+            stated.field.key
+        ),
+    )
+    .expecting("two values")
+    .help(format!("for example `{}`", stated.field.line()))
 }
 
 /// Whether a table holds only tables under names of their own: `[plate.upper]`.

@@ -26,7 +26,7 @@ pub(super) enum Start<'a> {
 }
 
 /// Iterations of one linear solution after which it counts as stalled.
-const MOST_ITERATIONS: usize = 400;
+const MOST_ITERATIONS: usize = 1500;
 /// Share of the active set that may change before the coarsest factor follows.
 const LAZY: f64 = 0.05;
 /// How far contact is expected beyond the bearing radius, in thinner plates.

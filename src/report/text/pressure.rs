@@ -2,7 +2,7 @@
 //! cone alone would have said.
 
 use crate::{
-    estimate::{CaseResult, Flatness, SolvedField, SolverHealth},
+    estimate::{CaseResult, Flatness, InterfaceResult, SolvedField, SolverHealth},
     report::{
         json::differences,
         number::{brief, four, percent, wrapped},
@@ -23,10 +23,19 @@ pub fn field(case: &CaseResult, detail: Detail) -> String {
         ],
         None => [four(peak), format!(", contact on {}", four(area))],
     };
-    let mut text = format!(
-        "pressure: {peak} MPa at most{area} mm², 95 % of the force within {} mm of a bolt axis\n",
-        four(pressure.radius_95 * 1e3),
+    let place = match case.interfaces.as_slice() {
+        [first, _, ..] => format!(" between {}", first.between()),
+        _ => String::new(),
+    };
+    let mut text = wrapped(
+        &format!(
+            "pressure{place}: {peak} MPa at most{area} mm², 95 % of the force within {} mm of a bolt axis",
+            four(pressure.radius_95 * 1e3),
+        ),
+        WIDTH,
+        2,
     );
+    text.push('\n');
     let mut line = |line: String| {
         text.push_str(&wrapped(&line, WIDTH, 2));
         text.push('\n');
@@ -53,6 +62,11 @@ pub fn field(case: &CaseResult, detail: Detail) -> String {
     if let Some(told) = flatness(&solved.flatness) {
         line(told);
     }
+    if case.interfaces.len() > 1 {
+        for interface in &case.interfaces {
+            line(stacked(interface));
+        }
+    }
     if let Some(told) = beside(solved, case) {
         line(told);
     }
@@ -66,6 +80,21 @@ pub fn field(case: &CaseResult, detail: Detail) -> String {
         }
     }
     text
+}
+
+/// One interface of a stack.
+fn stacked(interface: &InterfaceResult) -> String {
+    let gap = interface.gap_max.map_or_else(String::new, |gap| {
+        format!(", widest gap {} µm", four(gap * 1e6))
+    });
+    format!(
+        "{}: contact only {} W/K, mean drop {} K/W, about {} MPa at most on about {} mm²{gap}",
+        interface.between(),
+        four(interface.contact),
+        four(interface.drop),
+        two(interface.peak / 1e6),
+        two(interface.contact_area * 1e6),
+    )
 }
 
 /// Two digits.

@@ -62,6 +62,14 @@ pub fn results(case: &CaseResult) -> String {
     text.push_str(
         "Contact only leaves out how heat spreads to the bolts; all other rows hold that spreading.\n",
     );
+    if case.interfaces.len() > 1 {
+        text.push_str(&wrapped(
+            "Contact only is that of all interfaces in series; node to node stands between the first and the last plate.",
+            WIDTH,
+            2,
+        ));
+        text.push('\n');
+    }
     text.push_str(&scaled(case));
     text.push_str(&bounds(case));
     text

@@ -22,14 +22,15 @@ use crate::{
             },
         },
     },
-    joint::{Compliance, FillerKind, Joint, Plate},
+    joint::{Compliance, Joint},
     pressure::elastic::Field,
     resistance::{Path, columns::Heat},
 };
 
 use bank::{Bank, Wanted};
 use heat::{Conductances, conductances};
-use readings::{initial, widest};
+use problem::Order;
+use readings::{initial, shares, widest};
 
 /// What bounds the form of a field on columns.
 const FORMS: [Variant; 3] = [
@@ -50,6 +51,9 @@ struct OnColumns {
     field: Arc<Field>,
     heat: Heat,
     path: Path,
+    order: Order,
+    /// What touches and what is parted of every interface have in the resistance.
+    shares: Vec<[f64; 2]>,
     /// Local conductances of the first interface.
     first: Vec<Vec<f64>>,
     /// Pressures for drawings.
@@ -71,11 +75,14 @@ impl Columns {
         (level, variant): (Level, Variant),
         conditions: &Conditions,
     ) -> Result<Arc<Field>, Failure> {
+        let asperities: Vec<Option<f64>> = (0..joint.interfaces())
+            .map(|interface| asperities((joint, interface), variant, conditions))
+            .collect();
         let wanted = Wanted {
             level,
             variant,
             forces: &conditions.forces,
-            asperities: asperities(joint, variant, conditions),
+            asperities: &asperities,
         };
         self.bank.field(joint, &wanted)
     }
@@ -92,9 +99,12 @@ impl Solver for Columns {
         let plates = self.bank.plates(joint, level, &field)?;
         let mut faces: Conductances = conductances(&field, self.bank.order, (conditions, factors));
         let (heat, path) = plates
-            .solve(&faces, factors.conductivity(conditions), conditions)
+            .solve(&faces, &factors.conductivity(conditions), conditions)
             .map_err(Failure::Heat)?;
+        let order = self.bank.order;
         Ok(Arc::new(OnColumns {
+            shares: shares((&field, order), &heat, &faces),
+            order,
             field,
             heat,
             path,
@@ -113,7 +123,8 @@ impl Solver for Columns {
     }
 
     fn forms(&self, joint: &Joint) -> &'static [Variant] {
-        if bridged(joint) { &FORMS[..2] } else { &FORMS }
+        let layered = (0..joint.interfaces()).all(|interface| joint.is_layered(interface));
+        if layered { &FORMS[..2] } else { &FORMS }
     }
 
     /// Flat and bent faces are solved on the ground level; the ratio of its widest gap to that of
@@ -126,7 +137,7 @@ impl Solver for Columns {
     ) -> Result<Flatness, Failure> {
         let field = self.field(joint, (level, Variant::Stated), conditions)?;
         let left = widest(&field);
-        let height: f64 = joint.plates.iter().map(Plate::loose_flatness).sum();
+        let height = joint.most_loose_flatness();
         if joint.is_flat() && height <= 0.0 {
             return Ok(Flatness::Flat);
         }
@@ -148,7 +159,7 @@ impl Solver for Columns {
             });
         }
         Ok(Flatness::Known {
-            initial: initial(joint, &field),
+            initial: initial(joint, (&field, self.bank.order)),
             left,
             flat: carried * ground(Variant::Flat)?,
         })
@@ -164,9 +175,13 @@ impl Solver for Columns {
 ///
 /// `Y` is the separation of the mean planes by the law of the gap, which ends where the contact
 /// takes most of the face: nothing is left to yield there.
-fn asperities(joint: &Joint, variant: Variant, conditions: &Conditions) -> Option<f64> {
+fn asperities(
+    (joint, interface): (&Joint, usize),
+    variant: Variant,
+    conditions: &Conditions,
+) -> Option<f64> {
     const STEP: f64 = 0.05;
-    if variant.compliance(joint) == Compliance::Hard || bridged(joint) {
+    if variant.compliance(joint) == Compliance::Hard || joint.is_layered(interface) {
         return None;
     }
     let seats: f64 = joint
@@ -177,17 +192,9 @@ fn asperities(joint: &Joint, variant: Variant, conditions: &Conditions) -> Optio
         })
         .sum();
     let pressure = conditions.forces.iter().sum::<f64>() / seats;
-    let local = &conditions.faces.local;
+    let local = &conditions.faces[interface].local;
     let closure =
         local.separation(pressure * (1.0 - STEP)) - local.separation(pressure * (1.0 + STEP));
     let stiffness = 2.0 * STEP * pressure / closure;
     (stiffness.is_finite() && stiffness > 0.0).then_some(stiffness)
-}
-
-/// Whether a layer, a paste or a table stands between the faces, so that no peaks meet.
-fn bridged(joint: &Joint) -> bool {
-    joint
-        .filler
-        .as_ref()
-        .is_some_and(|filler| !matches!(filler.kind, FillerKind::Fluid { .. }))
 }

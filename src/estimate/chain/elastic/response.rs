@@ -1,19 +1,23 @@
 //! How the resistances answer to force, faces and conductivities: surfaces for the draws.
 
 use crate::{
-    estimate::chain::conditions::Conditions,
+    estimate::chain::{
+        conditions::Conditions,
+        elastic::solver::{Met, variable},
+    },
     numerics::surface::{Surface, design},
     resistance::Path,
 };
 
-/// Number of variables: force, contact, gap, conductivity of both plates.
-const VARIABLES: usize = 5;
-/// Half width of the design along contact, gap and both conductivities, as logarithms of the ratio
+/// Number of variables: force, contact, gap, conductivity of the first plate, of the last, and of
+/// those between; two plates have no last variable.
+const VARIABLES: usize = 6;
+/// Half width of the design along contact, gap and the conductivities, as logarithms of the ratio
 /// to nominal.
 ///
 /// About where the draws lie: surfaces and laws move the contact by half, gas and roughness the gap
 /// by a fourth, conductivities by a few hundredths.
-const STEPS: [f64; VARIABLES - 1] = [0.6, 0.25, 0.06, 0.06];
+static STEPS: [f64; VARIABLES - 1] = [0.6, 0.25, 0.06, 0.06, 0.06];
 /// Widest step between two forces that are solved, as a logarithm of their ratio.
 const FORCE_STEP: f64 = 0.6;
 /// Narrowest reach to either side of the nominal force, likewise.
@@ -24,39 +28,62 @@ pub(super) const LEAST_FORCE: f64 = 0.02;
 /// Places at which the surfaces are held against direct solutions: force between the ends of its
 /// range, the others in half widths of the design.
 const PROBES: [[f64; VARIABLES]; 4] = [
-    [0.8, -0.6, 0.5, -0.8, 0.8],
-    [0.15, 0.7, -0.6, 0.5, -0.7],
-    [0.35, -0.8, 0.7, 0.7, 0.6],
-    [0.6, 0.5, -0.7, -0.6, -0.5],
+    [0.8, -0.6, 0.5, -0.8, 0.8, -0.7],
+    [0.15, 0.7, -0.6, 0.5, -0.7, 0.6],
+    [0.35, -0.8, 0.7, 0.7, 0.6, 0.8],
+    [0.6, 0.5, -0.7, -0.6, -0.5, -0.6],
 ];
 
 /// Departure of a state from the nominal one: logarithms of ratios; the force is −∞ where none is
 /// left.
 pub(super) type Departure = [f64; VARIABLES];
 
+/// Half widths of the design of a joint of so many plates.
+pub(super) fn steps(plates: usize) -> &'static [f64] {
+    if plates > 2 {
+        &STEPS
+    } else {
+        &STEPS[..STEPS.len() - 1]
+    }
+}
+
 /// What stands for the faces in a departure: conductance at one pressure and at one gap.
-#[derive(Clone, Copy, Debug)]
+///
+/// A departure has one number for the contact of all interfaces: the mean of the logarithms of their
+/// ratios, weighted by what each has in the resistance. To first order that moves the resistance as
+/// the interfaces would one by one. The plates between the first and the last have one number as
+/// well, a plain mean.
+#[derive(Clone, Debug)]
 pub(super) struct Gauge {
-    /// Mean pressure as the force meets it, Pa.
-    pressure: f64,
-    /// Mean gap, m.
-    gap: f64,
     force: f64,
+    faces: Vec<FaceGauge>,
+    conductivity: Vec<f64>,
+}
+
+/// An interface in the nominal state, with its conductance where it touches and where it is parted.
+#[derive(Clone, Copy, Debug)]
+struct FaceGauge {
+    met: Met,
     touching: f64,
     parted: f64,
-    conductivity: [f64; 2],
 }
 
 impl Gauge {
     /// Reads the nominal conditions.
-    pub(super) fn of(conditions: &Conditions, pressure: f64, gap: f64) -> Self {
+    pub(super) fn of(conditions: &Conditions, met: &[Met]) -> Self {
+        let faces = conditions
+            .faces
+            .iter()
+            .zip(met)
+            .map(|(faces, met)| FaceGauge {
+                met: *met,
+                touching: faces.conductance(met.pressure),
+                parted: faces.local.parted(met.gap),
+            });
         Self {
-            pressure,
-            gap,
             force: conditions.forces.iter().sum(),
-            touching: conditions.faces.conductance(pressure),
-            parted: conditions.faces.local.parted(gap),
-            conductivity: conditions.conductivity,
+            faces: faces.collect(),
+            conductivity: conditions.conductivity.clone(),
         }
     }
 
@@ -76,17 +103,58 @@ impl Gauge {
             }
         };
         let force: f64 = conditions.forces.iter().sum();
+        let faces = || conditions.faces.iter().zip(&self.faces);
+        let last = self.conductivity.len() - 1;
+        let conductivity = |which: usize| {
+            let plates = conditions.conductivity.iter().zip(&self.conductivity);
+            let own = plates
+                .enumerate()
+                .filter(|(at, _)| variable(*at, last) == which);
+            weighted(&own.map(|(_, (now, nominal))| (ratio(*now, *nominal), 1.0)))
+        };
         [
             if force > 0.0 {
                 (force / self.force).ln()
             } else {
                 f64::NEG_INFINITY
             },
-            ratio(conditions.faces.conductance(self.pressure), self.touching),
-            ratio(conditions.faces.local.parted(self.gap), self.parted),
-            ratio(conditions.conductivity[0], self.conductivity[0]),
-            ratio(conditions.conductivity[1], self.conductivity[1]),
+            weighted(&faces().map(|(faces, gauge)| {
+                let now = faces.conductance(gauge.met.pressure);
+                (ratio(now, gauge.touching), gauge.met.shares[0])
+            })),
+            weighted(&faces().map(|(faces, gauge)| {
+                let now = faces.local.parted(gauge.met.gap);
+                (ratio(now, gauge.parted), gauge.met.shares[1])
+            })),
+            conductivity(0),
+            conductivity(1),
+            conductivity(2),
         ]
+    }
+}
+
+/// Weighted mean; a plain one where no weight is above zero, and 0 of nothing.
+fn weighted(values: &(impl Iterator<Item = (f64, f64)> + Clone)) -> f64 {
+    let mut alone = values.clone();
+    match (alone.next(), alone.next()) {
+        (None, _) => return 0.0,
+        // A mean of one would round.
+        (Some((only, _)), None) => return only,
+        _ => {}
+    }
+    let sums = |plain: f64| {
+        values
+            .clone()
+            .fold((0.0, 0.0), |(sum, weights), (value, weight)| {
+                (sum + (weight + plain) * value, weights + weight + plain)
+            })
+    };
+    let (sum, weights) = sums(0.0);
+    if weights > 0.0 {
+        sum / weights
+    } else {
+        let (sum, count) = sums(1.0);
+        sum / count
     }
 }
 
@@ -107,6 +175,8 @@ type Readings = [f64; 7];
 /// are those of the nominal force. Between forces a parabola through the three nearest.
 #[derive(Clone, Debug)]
 pub(super) struct Response {
+    /// Half widths of the design, one for each variable besides the force.
+    steps: &'static [f64],
     /// Logarithms of the force over the nominal one, rising.
     forces: Vec<f64>,
     /// One for each force and reading.
@@ -123,16 +193,17 @@ pub(super) struct Response {
 impl Response {
     /// Solves the designs and the probes, and lays the surfaces through the former.
     ///
-    /// `range` is the least and the largest force over the nominal; `solve` finds the paths of many
+    /// `range` is the least and the largest force over the nominal, with the half widths of the
+    /// design; `solve` finds the paths of many
     /// departures, `open` that without force.
     pub(super) fn through<E>(
-        range: [f64; 2],
+        (range, steps): ([f64; 2], &'static [f64]),
         solve: impl Fn(&[Departure]) -> Result<Vec<Path>, E>,
         open: Option<Path>,
     ) -> Result<Self, E> {
         let forces = forces(range);
-        let whole = design(&STEPS);
-        let alone = 1 + 2 * STEPS.len();
+        let whole = design(steps);
+        let alone = 1 + 2 * steps.len();
         let mut points: Vec<Departure> = Vec::new();
         for force in &forces {
             let nominal = *force == 0.0;
@@ -145,7 +216,7 @@ impl Response {
             let force = ends[0] + along * (ends[1] - ends[0]);
             let rest: Vec<f64> = rest
                 .iter()
-                .zip(STEPS)
+                .zip(steps)
                 .map(|(part, step)| part * step)
                 .collect();
             at(force, &rest)
@@ -155,7 +226,8 @@ impl Response {
         let read: Vec<Readings> = designs.iter().map(readings).collect();
         let centre = solutions_at_nominal(&forces, alone);
         let mut response = Self {
-            surfaces: surfaces(&forces, &read),
+            surfaces: surfaces((&forces, steps), &read),
+            steps,
             forces,
             open,
             base: designs[centre].clone(),
@@ -220,6 +292,7 @@ impl Response {
     /// Readings at a departure.
     fn at(&self, departure: &Departure) -> Readings {
         let [force, rest @ ..] = departure;
+        let rest = &rest[..self.steps.len()];
         let last = self.forces.len() - 1;
         let force = force.clamp(self.forces[0], self.forces[last]);
         let nearest = (0..=last)
@@ -277,7 +350,8 @@ pub(super) fn open(range: [f64; 2]) -> Departure {
 fn at(force: f64, rest: &[f64]) -> Departure {
     std::array::from_fn(|variable| match variable {
         0 => force,
-        _ => rest[variable - 1],
+        // Two plates have none between them.
+        _ => rest.get(variable - 1).copied().unwrap_or(0.0),
     })
 }
 
@@ -302,13 +376,13 @@ fn solutions_at_nominal(forces: &[f64], alone: usize) -> usize {
 }
 
 /// Surfaces through readings that stand force by force.
-fn surfaces(forces: &[f64], read: &[Readings]) -> Vec<[Surface; 7]> {
-    let whole = design(&STEPS).len();
-    let alone = 1 + 2 * STEPS.len();
+fn surfaces((forces, steps): (&[f64], &[f64]), read: &[Readings]) -> Vec<[Surface; 7]> {
+    let whole = design(steps).len();
+    let alone = 1 + 2 * steps.len();
     let nominal = solutions_at_nominal(forces, alone);
     let through = |reading: usize, values: &[Readings]| {
         let values: Vec<f64> = values.iter().map(|values| values[reading]).collect();
-        Surface::through(&STEPS, &values)
+        Surface::through(steps, &values)
     };
     let centre: [Surface; 7] =
         std::array::from_fn(|reading| through(reading, &read[nominal..nominal + whole]));

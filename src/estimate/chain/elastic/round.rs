@@ -79,6 +79,7 @@ impl Solver for Round {
             round::solve(&problem).map_err(unsolved)
         })?;
         let conductivity = factors.conductivity(conditions);
+        let conductivity = [conductivity[0], conductivity[conductivity.len() - 1]];
         let problem = self
             .shape
             .heat(contact.contact_radius, (conductivity, conditions.shanks[0]));
@@ -86,10 +87,11 @@ impl Solver for Round {
             heat::condense(&problem).map_err(Failure::Heat)
         })?;
         let force = conditions.forces[0];
-        let touching = conditions.faces.over_many_points(contact.peak(force));
+        let faces = &conditions.faces[0];
+        let touching = faces.over_many_points(contact.peak(force));
         let law = Law {
             closed: |pressure| factors.touching * touching(pressure),
-            parted: |gap| factors.parted * conditions.faces.local.parted(gap),
+            parted: |gap| factors.parted * faces.local.parted(gap),
         };
         let local = |radius| law.at(&contact, [force, radius]);
         let heat = plates.solve(local).map_err(Failure::Heat)?;

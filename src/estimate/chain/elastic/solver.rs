@@ -4,7 +4,8 @@ use std::{fmt::Debug, sync::Arc};
 
 use crate::{
     estimate::{
-        ConeBeside, FacePoint, Failure, Flatness, Meeting, PressureResult, RingRow, Temperatures,
+        ConeBeside, FacePoint, Failure, Flatness, InterfaceResult, Meeting, PressureResult,
+        RingRow, Temperatures,
         chain::{
             PressedEdge,
             conditions::Conditions,
@@ -21,22 +22,50 @@ use crate::{
 /// What a departure does to the faces and plates, as factors.
 #[derive(Clone, Copy, Debug)]
 pub(super) struct Factors {
+    /// On the conductance where faces touch, of all interfaces alike.
     pub(super) touching: f64,
+    /// The same where they are parted.
     pub(super) parted: f64,
-    pub(super) conductivity: [f64; 2],
+    /// On the conductivity of the first plate, the last and those between.
+    pub(super) conductivity: [f64; 3],
 }
 
 impl Factors {
     pub(super) const NONE: Self = Self {
         touching: 1.0,
         parted: 1.0,
-        conductivity: [1.0; 2],
+        conductivity: [1.0; 3],
     };
 
-    /// Conductivity of both plates, W/(m K).
-    pub(super) fn conductivity(&self, conditions: &Conditions) -> [f64; 2] {
-        [0, 1].map(|plate| conditions.conductivity[plate] * self.conductivity[plate])
+    /// Conductivity of each plate, W/(m K).
+    pub(super) fn conductivity(&self, conditions: &Conditions) -> Vec<f64> {
+        let last = conditions.conductivity.len() - 1;
+        let plates = conditions.conductivity.iter().enumerate();
+        plates
+            .map(|(plate, conductivity)| conductivity * self.conductivity[variable(plate, last)])
+            .collect()
     }
+}
+
+/// Which of the three factors on conductivity a plate has.
+pub(super) fn variable(plate: usize, last: usize) -> usize {
+    match plate {
+        0 => 0,
+        _ if plate == last => 1,
+        _ => 2,
+    }
+}
+
+/// How the faces of an interface meet as a whole, for the surfaces of the draws.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub(in crate::estimate::chain) struct Met {
+    /// Mean pressure as the force meets it, Pa: `∫ p² dA/∫ p dA`.
+    pub(super) pressure: f64,
+    /// Mean gap, m.
+    pub(super) gap: f64,
+    /// Share in `Σ ∫ q²/h dA` of what touches and of what is parted: how much a change of its
+    /// conductance moves the resistance; any common scale.
+    pub(super) shares: [f64; 2],
 }
 
 /// A way to contact and heat of one joint, for any torque and medium; it keeps what it has solved.
@@ -76,19 +105,19 @@ pub(in crate::estimate::chain) trait Solved:
     /// Resistances.
     fn path(&self) -> &Path;
 
-    /// Mean pressure as the force meets it, Pa: `∫ p² dA/∫ p dA`.
-    fn mean_pressure(&self) -> f64;
+    /// How the faces of each interface meet, from warm to cold.
+    fn met(&self) -> Vec<Met>;
 
-    /// Mean gap over the faying faces, m.
-    fn gap_mean(&self) -> f64;
+    /// What is told of each interface, from warm to cold.
+    fn interfaces(&self, joint: &Joint) -> Vec<InterfaceResult>;
 
-    /// Area of the faying faces, m².
+    /// Area of the faying faces of the first interface, m².
     fn footprint(&self) -> f64;
 
     /// Radius of a bolt's contact, m.
     fn contact_radius(&self, bolt: usize) -> f64;
 
-    /// How the faces meet at a point; none off the faying faces.
+    /// How the faces of the first interface meet at a point; none off the faying faces.
     fn met_at(&self, point: [f64; 2]) -> Option<Meeting>;
 
     /// The rings around a bolt, from its hole outward.

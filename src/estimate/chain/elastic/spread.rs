@@ -17,7 +17,6 @@ use crate::{
             form::with_form,
         },
     },
-    joint::Plate,
     resistance::Path,
 };
 
@@ -100,7 +99,7 @@ impl ElasticModel {
     ) -> Result<Spread, Failure> {
         let stated = (GROUND, Variant::Stated);
         let base = self.solved(chain, stated, (nominal, &Factors::NONE))?;
-        let gauge = Gauge::of(nominal, base.mean_pressure(), base.gap_mean());
+        let gauge = Gauge::of(nominal, &base.met());
         for force in response::outwards(range) {
             let departure = response::at_force(force);
             self.departed(chain, nominal, &departure)?;
@@ -110,8 +109,9 @@ impl ElasticModel {
         } else {
             None
         };
+        let steps = response::steps(chain.joint().plates.len());
         let mut response = Response::through(
-            range,
+            (range, steps),
             |departures| {
                 departures
                     .par_iter()
@@ -153,7 +153,7 @@ impl ElasticModel {
             let ratio = added(*variant)? / base;
             form = [form[0].min(ratio), form[1].max(ratio)];
         }
-        let loose = joint.plates.iter().map(Plate::loose_flatness).sum::<f64>() > 0.0;
+        let loose = joint.most_loose_flatness() > 0.0;
         let bent = if loose {
             [
                 added(Variant::Bent(-1.0))? / base,
@@ -202,11 +202,11 @@ impl ElasticModel {
         nominal: &Conditions,
         departure: &Departure,
     ) -> Result<Path, Failure> {
-        let [force, touching, parted, warm, cold] = *departure;
+        let [force, touching, parted, warm, cold, between] = *departure;
         let factors = Factors {
             touching: touching.exp(),
             parted: parted.exp(),
-            conductivity: [warm.exp(), cold.exp()],
+            conductivity: [warm.exp(), cold.exp(), between.exp()],
         };
         let conditions = under(nominal, force);
         let solved = self.solved(chain, (GROUND, Variant::Stated), (&conditions, &factors))?;

@@ -1,7 +1,7 @@
 //! What a solved field leaves open: how heads press, whether faces slide, what yields, which way
 //! faces are bent.
 
-use crate::joint::{Compliance, FaceFriction, HeadModel, Joint};
+use crate::joint::{Compliance, FaceFriction, Facing, HeadModel, Joint};
 
 /// The joint as stated, or with one thing turned into its opposite.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -45,18 +45,18 @@ impl Variant {
         }
     }
 
-    /// Initial gap of the faces at a point, m.
-    pub(super) fn initial_gap(self, joint: &Joint, point: [f64; 2]) -> f64 {
+    /// Initial gap of the faces of an interface (0 is the warmest) at a point, m.
+    pub(super) fn initial_gap(self, (joint, interface): (&Joint, usize), point: [f64; 2]) -> f64 {
         match self {
             Self::Flat => 0.0,
             Self::Bent(place) => {
-                let bent = joint
-                    .plates
-                    .iter()
-                    .map(|plate| plate.flatness_gap(point, place * plate.loose_flatness()));
-                joint.initial_gap(point) + bent.sum::<f64>()
+                let faces = [Facing::Cold, Facing::Warm].into_iter();
+                let bent = faces.zip(joint.meeting(interface)).map(|(facing, plate)| {
+                    plate.flatness_gap(point, place * plate.loose_flatness(facing))
+                });
+                joint.initial_gap(interface, point) + bent.sum::<f64>()
             }
-            _ => joint.initial_gap(point),
+            _ => joint.initial_gap(interface, point),
         }
     }
 

@@ -46,8 +46,8 @@ pub(super) struct Wanted<'a> {
     pub(super) variant: Variant,
     /// Clamp force of each bolt, N.
     pub(super) forces: &'a [f64],
-    /// Pressure over closure of the asperities, Pa/m; none where they do not yield.
-    pub(super) asperities: Option<f64>,
+    /// Pressure over closure of the asperities of each interface, Pa/m; none where they do not yield.
+    pub(super) asperities: &'a [Option<f64>],
 }
 
 /// A table with its level and the forces at factor 1, N.
@@ -58,7 +58,7 @@ struct Solved {
     level: Level,
     variant: Variant,
     forces: Vec<f64>,
-    asperities: Option<f64>,
+    asperities: Vec<Option<f64>>,
     field: Arc<Field>,
 }
 
@@ -110,7 +110,7 @@ impl Bank {
 
     /// A field between those of a table.
     fn tabulated(&self, wanted: &Wanted) -> Option<Arc<Field>> {
-        if wanted.variant != Variant::Stated || wanted.asperities.is_some() {
+        if wanted.variant != Variant::Stated || wanted.asperities.iter().any(Option::is_some) {
             return None;
         }
         let tables = self.tables.lock().unwrap_or_else(PoisonError::into_inner);
@@ -131,13 +131,14 @@ impl Bank {
         if Variant::Stated.is_flat(joint) {
             return Ok(());
         }
+        let hard = vec![None; joint.interfaces()];
         let solve = |factor: f64| {
             let scaled: Vec<f64> = forces.iter().map(|force| force * factor).collect();
             let wanted = Wanted {
                 level,
                 variant: Variant::Stated,
                 forces: &scaled,
-                asperities: None,
+                asperities: &hard,
             };
             self.field(joint, &wanted).map_err(|failure| match failure {
                 Failure::Contact(found) => found,
@@ -189,7 +190,7 @@ impl Bank {
             level: wanted.level,
             variant: wanted.variant,
             forces: wanted.forces.to_vec(),
-            asperities: wanted.asperities,
+            asperities: wanted.asperities.to_vec(),
             field: field.clone(),
         });
         Ok(field)

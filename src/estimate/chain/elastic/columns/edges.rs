@@ -1,19 +1,27 @@
 //! Where the contact reaches an edge of plate or foot.
 
-use crate::{estimate::chain::PressedEdge, joint::Joint, pressure::elastic::Field};
+use crate::{
+    estimate::chain::{PressedEdge, elastic::columns::problem::Order},
+    joint::Joint,
+    pressure::elastic::Field,
+};
 
 /// Share of the peak pressure below which an edge counts as free.
 const EDGE_FLOOR: f64 = 0.01;
 
-/// The place of the highest pressure at an edge of the faying faces of plates or feet, holes not
+/// The place of the highest pressure at an edge of the faying faces of an interface, holes not
 /// looked at; none where the contact stays inside.
 ///
 /// A column stands at an edge when a step to a neighbouring line leaves plate or foot.
-pub(super) fn pressed_edge(joint: &Joint, field: &Field) -> Option<PressedEdge> {
-    let (plan, face) = (&field.mesh.plan, &field.faces[0]);
-    let floor = EDGE_FLOOR * field.peak_pressure();
+pub(super) fn pressed_edge(
+    (joint, interface): (&Joint, usize),
+    (field, order): (&Field, Order),
+) -> Option<PressedEdge> {
+    let own = order.plate(interface, joint.interfaces());
+    let (plan, face) = (&field.mesh.plan, &field.faces[own]);
+    let floor = EDGE_FLOOR * field.face(own).peak_pressure();
     let meets = |point: [f64; 2]| {
-        let mut plates = joint.plates.iter();
+        let mut plates = joint.meeting(interface).into_iter();
         plates.all(|plate| plate.covers(point) && plate.stands_at(point))
     };
     let beside = |lines: &[f64], at: usize| {

@@ -82,7 +82,7 @@ impl Plates {
     pub(super) fn solve(
         &self,
         conductances: &Conductances,
-        in_plane: [f64; 2],
+        in_plane: &[f64],
         conditions: &Conditions,
     ) -> Result<(Heat, Path), resistance::Failure> {
         let conductivity: Vec<Conductivity> = in_plane
@@ -145,18 +145,15 @@ pub(super) fn conductances(
     order: Order,
     (conditions, factors): (&Conditions, &Factors),
 ) -> Conductances {
-    let highest = field
-        .faces
-        .iter()
-        .flat_map(|face| face.pressure.iter().copied())
-        .fold(0.0, f64::max);
-    let touching = conditions.faces.over_many_points(highest);
-    let local = &conditions.faces.local;
-    let parted = |gap: f64| factors.parted * local.parted(gap);
     let mut found: Conductances = field
         .faces
         .iter()
-        .map(|face| {
+        .enumerate()
+        .map(|(index, face)| {
+            let laws = &conditions.faces[order.plate(index, field.faces.len())];
+            let highest = face.pressure.iter().copied().fold(0.0, f64::max);
+            let touching = laws.over_many_points(highest);
+            let parted = |gap: f64| factors.parted * laws.local.parted(gap);
             let columns = face.pressure.iter().zip(&face.gap).zip(&face.weight);
             let own = columns
                 .map(|((pressure, gap), weight)| {

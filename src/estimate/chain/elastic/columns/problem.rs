@@ -19,8 +19,8 @@ pub(super) struct Task<'a> {
     pub(super) fineness: Fineness,
     /// Clamp force of each bolt, N.
     pub(super) forces: &'a [f64],
-    /// Pressure over closure of the asperities, Pa/m; none where they do not yield.
-    pub(super) asperities: Option<f64>,
+    /// Pressure over closure of the asperities of each interface, Pa/m; none where they do not yield.
+    pub(super) asperities: &'a [Option<f64>],
     pub(super) most_bytes: u64,
     pub(super) watch: &'a Watch,
 }
@@ -58,7 +58,8 @@ impl Order {
         }
     }
 
-    /// Index in the file of a body counted from the heads.
+    /// Index in the file of a body (or of an interface, when their number is given) counted from
+    /// the heads, and the other way round.
     pub(super) fn plate(self, body: usize, plates: usize) -> usize {
         match self {
             Self::AsListed => body,
@@ -87,15 +88,24 @@ pub(super) fn with_problem<T>(
         .zip(&covers)
         .map(|(plate, storeys)| body(plate, storeys))
         .collect();
-    let gap: Box<Height> = Box::new(|point| task.variant.initial_gap(joint, point));
-    let interfaces = (1..plates.len())
-        .map(|_| Interface {
+    let count = joint.interfaces();
+    let gaps: Vec<Box<Height>> = (0..count)
+        .map(|index| {
+            let interface = order.plate(index, count);
+            let gap = move |point| task.variant.initial_gap((joint, interface), point);
+            Box::new(gap) as Box<Height>
+        })
+        .collect();
+    let interfaces = gaps
+        .iter()
+        .enumerate()
+        .map(|(index, gap)| Interface {
             gap: gap.as_ref(),
             faces: match task.variant.faces(joint) {
                 FaceFriction::Frictionless => Faces::Frictionless,
                 FaceFriction::Stuck => Faces::Stuck,
             },
-            compliance: compliance(joint, task),
+            compliance: compliance((joint, order.plate(index, count)), task),
         })
         .collect();
     let tell = |progress: Progress| task.watch.tell(&told(task.fineness, &progress));
@@ -193,14 +203,13 @@ fn body<'a>(plate: &Plate, storeys: &'a [Storey<'a>]) -> Body<'a> {
 ///
 /// A pad of known stiffness spreads the load; a paste or a fluid flows away from it and leaves the
 /// faces as they are.
-fn compliance(joint: &Joint, task: &Task) -> elastic::Compliance {
-    if let Some(stiffness) = joint.filler.as_ref().and_then(joint::Filler::stiffness) {
+fn compliance((joint, interface): (&Joint, usize), task: &Task) -> elastic::Compliance {
+    if let Some(stiffness) = joint.filler(interface).and_then(joint::Filler::stiffness) {
         return elastic::Compliance::Layer { stiffness };
     }
-    task.asperities
-        .map_or(elastic::Compliance::Hard, |stiffness| {
-            elastic::Compliance::Asperities { stiffness }
-        })
+    task.asperities[interface].map_or(elastic::Compliance::Hard, |stiffness| {
+        elastic::Compliance::Asperities { stiffness }
+    })
 }
 
 fn bolts(joint: &Joint, order: Order, forces: &[f64]) -> Vec<Bolt> {
@@ -215,7 +224,7 @@ fn bolts(joint: &Joint, order: Order, forces: &[f64]) -> Vec<Bolt> {
                 head,
                 force: *force,
                 hole_radii: (0..count)
-                    .map(|body| fastener.hole_radius[usize::from(order.plate(body, count) > 0)])
+                    .map(|body| fastener.hole_radius[order.plate(body, count)])
                     .collect(),
                 end,
             }
@@ -244,7 +253,7 @@ fn ends(fastener: &Fastener, order: Order, plates: usize) -> (Annulus, End) {
             }
         }
         Engagement::Tapped { length } | Engagement::Insert { length } => {
-            let threaded = fastener.hole_radius[usize::from(fastener.head_plate == 0)];
+            let threaded = fastener.outer_holes()[usize::from(fastener.head_plate == 0)];
             (
                 head,
                 End::Thread {

@@ -2,14 +2,17 @@
 
 use crate::{
     estimate::{
-        ConeBeside, FacePoint, Flatness, Meeting, PressureResult, RingRow, SolvedField,
-        SolverHealth, Temperatures,
+        ConeBeside, FacePoint, Flatness, InterfaceResult, Meeting, PressureResult, RingRow,
+        SolvedField, SolverHealth, Temperatures,
         chain::{
             PressedEdge,
             elastic::{
-                columns::{OnColumns, edges::pressed_edge, temperatures},
+                columns::{
+                    OnColumns, edges::pressed_edge, heat::Conductances, problem::Order,
+                    temperatures,
+                },
                 rings::{Sum, edges, rows},
-                solver::Solved,
+                solver::{Met, Solved},
             },
         },
     },
@@ -18,7 +21,7 @@ use crate::{
     pressure::elastic::{FaceField, Field},
     resistance::{
         Path,
-        columns::{Across, Section},
+        columns::{Across, Heat, Section},
     },
 };
 
@@ -32,40 +35,97 @@ pub(super) fn widest(field: &Field) -> f64 {
         .fold(0.0, f64::max)
 }
 
+impl OnColumns {
+    /// Index in the field of an interface of the joint: the field counts from the heads.
+    fn own(&self, interface: usize) -> usize {
+        self.order.plate(interface, self.field.faces.len())
+    }
+}
+
+/// Mean pressure as the force meets it over columns that are no slivers, Pa: `∫ p² dA/∫ p dA`.
+fn mean_pressure(face: &FaceField) -> f64 {
+    let (mut square, mut force) = (0.0, 0.0);
+    for (column, pressure) in face.pressure.iter().enumerate() {
+        if face.weight[column] >= 0.5 * face.full_weight[column] {
+            square += face.weight[column] * pressure * pressure;
+            force += face.weight[column] * pressure;
+        }
+    }
+    if force > 0.0 { square / force } else { 0.0 }
+}
+
+/// `∫ q²/h dA` over what touches and over what is parted of every interface, warm one first, K/W:
+/// by so much the resistance falls when the conductance there rises, relative to the rise.
+pub(super) fn shares(
+    (field, order): (&Field, Order),
+    heat: &Heat,
+    conductances: &Conductances,
+) -> Vec<[f64; 2]> {
+    let interfaces = heat.flux.iter().zip(conductances).enumerate();
+    interfaces
+        .map(|(interface, (fluxes, conductances))| {
+            let face = &field.faces[order.plate(interface, field.faces.len())];
+            let mut shares = [0.0; 2];
+            let areas = [&face.weight, &face.open_weight];
+            for (part, (flux, conductance)) in fluxes.iter().zip(conductances).enumerate() {
+                for (column, (flux, conductance)) in flux.iter().zip(conductance).enumerate() {
+                    if *conductance > 0.0 {
+                        let touches = part == 0 && face.pressure[column] > 0.0;
+                        shares[usize::from(!touches)] +=
+                            areas[part][column] * flux * flux / conductance;
+                    }
+                }
+            }
+            shares
+        })
+        .collect()
+}
+
 impl Solved for OnColumns {
     fn path(&self) -> &Path {
         &self.path
     }
 
-    /// Over columns that are no slivers.
-    fn mean_pressure(&self) -> f64 {
-        let face = &self.field.faces[0];
-        let (mut square, mut force) = (0.0, 0.0);
-        for (column, pressure) in face.pressure.iter().enumerate() {
-            if face.weight[column] >= 0.5 * face.full_weight[column] {
-                square += face.weight[column] * pressure * pressure;
-                force += face.weight[column] * pressure;
-            }
-        }
-        if force > 0.0 { square / force } else { 0.0 }
+    fn met(&self) -> Vec<Met> {
+        let shares = self.shares.iter().enumerate();
+        shares
+            .map(|(interface, shares)| Met {
+                pressure: mean_pressure(&self.field.faces[self.own(interface)]),
+                gap: self.field.face(self.own(interface)).gap_mean(),
+                shares: *shares,
+            })
+            .collect()
     }
 
-    fn gap_mean(&self) -> f64 {
-        self.field.gap_mean()
+    fn interfaces(&self, joint: &Joint) -> Vec<InterfaceResult> {
+        (0..joint.interfaces())
+            .map(|interface| {
+                let face = self.field.face(self.own(interface));
+                InterfaceResult {
+                    plates: joint.meeting(interface).map(|plate| plate.name.clone()),
+                    contact: self.heat.contact_per_interface[interface],
+                    force: self.field.faces[self.own(interface)].force(),
+                    peak: face.peak_pressure(),
+                    contact_area: face.contact_area(),
+                    gap_max: Some(face.gap_max()),
+                    drop: self.heat.interface_drops[interface],
+                }
+            })
+            .collect()
     }
 
     fn pressure(&self, flatness: Flatness, cone: Option<ConeBeside>) -> PressureResult {
-        let field = &self.field;
-        let health = &field.health;
+        let health = &self.field.health;
+        let face = self.field.face(self.own(0));
         PressureResult {
-            peak: field.peak_pressure(),
-            contact_area: field.contact_area(),
-            radius_95: field.radius_holding(0.95),
-            force: field.force(),
-            gap_max: Some(field.gap_max()),
-            gap_mean: Some(field.gap_mean()),
+            peak: face.peak_pressure(),
+            contact_area: face.contact_area(),
+            radius_95: face.radius_holding(0.95),
+            force: self.field.faces[self.own(0)].force(),
+            gap_max: Some(face.gap_max()),
+            gap_mean: Some(face.gap_mean()),
             solved: Some(SolvedField {
-                mean_force_radius: field.mean_force_radius(),
+                mean_force_radius: face.mean_force_radius(),
                 flatness,
                 cone,
                 health: SolverHealth {
@@ -88,16 +148,26 @@ impl Solved for OnColumns {
     }
 
     fn pressed_edge(&self, joint: &Joint) -> Option<PressedEdge> {
-        pressed_edge(joint, &self.field)
+        let field: &Field = &self.field;
+        (0..joint.interfaces())
+            .filter_map(|interface| pressed_edge((joint, interface), (field, self.order)))
+            .reduce(|one, other| {
+                if other.pressure > one.pressure {
+                    other
+                } else {
+                    one
+                }
+            })
     }
 
     fn met_at(&self, point: [f64; 2]) -> Option<Meeting> {
         let field = &self.field;
-        let shape = &field.mesh.faces[0];
+        let own = self.own(0);
+        let shape = &field.mesh.faces[own];
         let plan = &field.mesh.plan;
-        let gap = field.gap_at(point)?;
+        let gap = field.face(own).gap_at(point)?;
         let pressure = if shape.contact.holds(plan, point) {
-            let shown = self.shown.get_or_init(|| field.face(0).shown_pressure());
+            let shown = self.shown.get_or_init(|| field.face(own).shown_pressure());
             let around = plan.around(point)?;
             around
                 .iter()
@@ -115,7 +185,7 @@ impl Solved for OnColumns {
     /// Radius of the disc that has the area in contact around a bolt, hole included, m.
     fn contact_radius(&self, bolt: usize) -> f64 {
         let field = &self.field;
-        let face = &field.faces[0];
+        let face = &field.faces[self.own(0)];
         let area: f64 = (0..face.weight.len())
             .filter(|column| face.pressure[*column] > 0.0)
             .filter(|column| nearest(field, field.mesh.plan.place(*column)).0 == bolt)
@@ -127,7 +197,7 @@ impl Solved for OnColumns {
 
     /// Beside feet included.
     fn footprint(&self) -> f64 {
-        let face = &self.field.faces[0];
+        let face = &self.field.faces[self.own(0)];
         face.weight.iter().chain(&face.open_weight).sum()
     }
 
@@ -153,7 +223,7 @@ impl Solved for OnColumns {
             far_end(field, bolt),
         );
         let mut sums = vec![Sum::default(); edges.len() - 1];
-        for (region, values) in parts(field, &self.first) {
+        for (region, values) in parts((field, self.own(0)), &self.first) {
             gather(field, region, |place, area, around| {
                 let (owner, distance) = nearest(field, place);
                 if owner != bolt {
@@ -183,9 +253,12 @@ struct Values<'a> {
 }
 
 /// The touching part of the first interface, and what lies beside feet.
-fn parts<'a>(field: &'a Field, first: &'a [Vec<f64>]) -> Vec<(&'a Region, Values<'a>)> {
-    let shape = &field.mesh.faces[0];
-    let face: &FaceField = &field.faces[0];
+fn parts<'a>(
+    (field, own): (&'a Field, usize),
+    first: &'a [Vec<f64>],
+) -> Vec<(&'a Region, Values<'a>)> {
+    let shape = &field.mesh.faces[own];
+    let face: &FaceField = &field.faces[own];
     let mut found = vec![(
         &shape.contact,
         Values {
@@ -242,14 +315,18 @@ fn nearest(field: &Field, [x, y]: [f64; 2]) -> (usize, f64) {
         .unwrap_or((0, 0.0))
 }
 
-/// Widest initial gap over the faying faces, counted from their first point of contact, m.
-pub(super) fn initial(joint: &Joint, field: &Field) -> f64 {
-    let face = &field.faces[0];
-    let gaps = (0..face.weight.len())
-        .filter(|column| face.weight[*column] > 0.0)
-        .map(|column| joint.initial_gap(field.mesh.plan.place(column)));
-    let (low, high) = gaps.fold((f64::INFINITY, f64::NEG_INFINITY), |(low, high), gap| {
-        (low.min(gap), high.max(gap))
-    });
-    (high - low).max(0.0)
+/// Widest initial gap over the faying faces of any interface, each counted from its first point of
+/// contact, m.
+pub(super) fn initial(joint: &Joint, (field, order): (&Field, Order)) -> f64 {
+    let widest = |interface: usize| {
+        let face = &field.faces[order.plate(interface, field.faces.len())];
+        let gaps = (0..face.weight.len())
+            .filter(|column| face.weight[*column] > 0.0)
+            .map(|column| joint.initial_gap(interface, field.mesh.plan.place(column)));
+        let (low, high) = gaps.fold((f64::INFINITY, f64::NEG_INFINITY), |(low, high), gap| {
+            (low.min(gap), high.max(gap))
+        });
+        (high - low).max(0.0)
+    };
+    (0..joint.interfaces()).map(widest).fold(0.0, f64::max)
 }

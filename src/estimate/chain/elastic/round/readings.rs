@@ -4,14 +4,14 @@ use std::f64::consts::PI;
 
 use crate::{
     estimate::{
-        ConeBeside, FacePoint, Flatness, Meeting, PressureResult, RingRow, SolvedField,
-        SolverHealth, Temperatures,
+        ConeBeside, FacePoint, Flatness, InterfaceResult, Meeting, PressureResult, RingRow,
+        SolvedField, SolverHealth, Temperatures,
         chain::{
             PressedEdge,
             elastic::{
                 rings::{Sum, edges, rows},
                 round::{InRound, shape::Shape, temperatures},
-                solver::Solved,
+                solver::{Met, Solved},
             },
         },
     },
@@ -29,12 +29,17 @@ impl Solved for InRound {
         &self.heat.path
     }
 
-    fn mean_pressure(&self) -> f64 {
-        self.contact.mean_pressure(self.force)
+    fn met(&self) -> Vec<Met> {
+        vec![Met {
+            pressure: self.contact.mean_pressure(self.force),
+            gap: self.contact.gap_mean(self.force),
+            shares: [1.0; 2],
+        }]
     }
 
-    fn gap_mean(&self) -> f64 {
-        self.contact.gap_mean(self.force)
+    fn interfaces(&self, joint: &Joint) -> Vec<InterfaceResult> {
+        let pressure = self.pressure(Flatness::Flat, None);
+        vec![InterfaceResult::only(joint, self.path(), &pressure)]
     }
 
     fn footprint(&self) -> f64 {

@@ -47,7 +47,7 @@ impl Shape {
         };
         let near = |a: f64, b: f64| (a - b).abs() <= ROUNDING * radius;
         let centred = |point: [f64; 2]| near(point[0], at[0]) && near(point[1], at[1]);
-        let [hole, far_hole] = fastener.hole_radius;
+        let [hole, far_hole] = fastener.outer_holes();
         let head = fastener.head_seat;
         let nut = fastener.nut_seat.unwrap_or(head);
         let seated = matches!(fastener.engagement, Engagement::Nut)
@@ -57,10 +57,7 @@ impl Shape {
                 to_the_hole && hole < seat.outer_radius && seat.outer_radius <= *radius
             });
         let plain = |plate: &Plate| {
-            plate.ribs.is_empty()
-                && plate.cutouts.is_empty()
-                && plate.feet.is_none()
-                && plate.loose_flatness() <= 0.0
+            plate.ribs.is_empty() && plate.cutouts.is_empty() && plate.feet.is_none()
         };
         let round = near(*radius, *other)
             && near(hole, far_hole)
@@ -68,7 +65,8 @@ impl Shape {
             && centred(second.origin);
         let bare = joint.is_flat()
             && joint.contact.compliance == Compliance::Hard
-            && joint.filler.as_ref().and_then(Filler::stiffness).is_none();
+            && joint.filler(0).and_then(Filler::stiffness).is_none()
+            && joint.loose_flatness(0) <= 0.0;
         let (source, sink) = (joint.source.alone()?, joint.sink.alone()?);
         let patch = match source.zone {
             Zone::Face => Patch::Face,
