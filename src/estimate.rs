@@ -211,11 +211,23 @@ fn assumptions(chain: &Chain) -> Vec<Assumption> {
     // The cone presses as if nothing lay between the plates, so it assumes no modulus.
     let modulus = |field: &str| field.starts_with("filler") && field.ends_with(".modulus");
     all.retain(|each| chain.knows_the_gap() || !modulus(&each.field));
+    let warm = chain.knows_the_gap() && chain.joint().service.heat.is_some();
+    let (value, why) = if warm {
+        (
+            "properties at the means of the plates",
+            "conductivity and gas are taken at the mean temperature of each plate under the stated heat, contraction at \
+             the sink temperature of each case",
+        )
+    } else {
+        (
+            "properties at the mean sink surface",
+            "conductivity, gas and contraction are taken at the sink temperature of each case",
+        )
+    };
     all.push(Assumption {
         field: "service.temperature".to_owned(),
-        value: "properties at the mean sink surface".to_owned(),
-        why: "conductivity, gas and contraction are taken at the sink temperature of each case"
-            .to_owned(),
+        value: value.to_owned(),
+        why: why.to_owned(),
     });
     all
 }

@@ -51,6 +51,7 @@ fn interface(face: &Face) -> Interface {
         measured: None,
         solid_factor: 1.0,
         filler_factor: 1.0,
+        filler_modulus: None,
     }
 }
 

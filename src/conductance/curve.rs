@@ -120,6 +120,7 @@ mod tests {
             measured: None,
             solid_factor: 1.0,
             filler_factor: 1.0,
+            filler_modulus: None,
         }
     }
 

@@ -34,7 +34,10 @@ pub(crate) struct Filling {
 enum Shape {
     Layer {
         thickness: f64,
-        resistance: f64,
+        conductivity: f64,
+        boundary: f64,
+        /// Pressure over true strain, Pa; none stays as thick as it is.
+        modulus: Option<f64>,
     },
     Paste {
         /// Bond line at 1 Pa, m.
@@ -52,7 +55,7 @@ impl Filling {
     /// The filling of an interface; none when the spots stay: bare, or with a fluid.
     ///
     /// ```text
-    /// layer:  R = t/k + boundary
+    /// layer:  R = t/k + boundary,   t = t₀ exp(−p/M) where its modulus M and the pressure on it are known
     /// paste:  R = BLT/k + (σ₁ + σ₂)/(2k),   BLT between the thinnest and the applied bond line
     /// ```
     ///
@@ -66,7 +69,9 @@ impl Filling {
                 boundary,
             } => Shape::Layer {
                 thickness: *thickness,
-                resistance: thickness / conductivity + boundary,
+                conductivity: *conductivity,
+                boundary: *boundary,
+                modulus: interface.filler_modulus,
             },
             FillerKind::Paste {
                 conductivity,
@@ -98,7 +103,11 @@ impl Filling {
     pub(crate) fn resistance(&self, pressure: f64) -> f64 {
         self.factor
             * match &self.shape {
-                Shape::Layer { resistance, .. } => *resistance,
+                Shape::Layer {
+                    conductivity,
+                    boundary,
+                    ..
+                } => self.thickness(pressure) / conductivity + boundary,
                 Shape::Paste {
                     conductivity,
                     wetting,
@@ -112,7 +121,12 @@ impl Filling {
     #[inline]
     pub(crate) fn thickness(&self, pressure: f64) -> f64 {
         match &self.shape {
-            Shape::Layer { thickness, .. } => *thickness,
+            // Closure p/M of the thickness that is left: −dt/t = dp/M, and it never turns negative.
+            Shape::Layer {
+                thickness, modulus, ..
+            } => modulus.map_or(*thickness, |modulus| {
+                thickness * (-pressure.max(0.0) / modulus).exp()
+            }),
             Shape::Paste {
                 bond_line,
                 thinnest,
@@ -131,21 +145,25 @@ impl Filling {
         }
     }
 
-    /// Area resistance where the faces stand `opening` further apart than without load, m² K/W.
+    /// Area resistance where the faces stand `opening` (m) further apart than where they meet under
+    /// the mean pressure `beside` (Pa), m² K/W.
     ///
-    /// A paste bridges the opening once it is wider than the bond line as applied (assumed: it
-    /// is not torn). A pad or foil stays on one face, and the `medium` conductance crosses the
-    /// opening.
-    pub(crate) fn parted(&self, opening: f64, medium: impl Fn(f64) -> f64) -> f64 {
+    /// A paste fills the gap, which is its bond line there and the opening, up to its thickness as
+    /// applied; the rest stays open, and the `medium` conductance crosses it. A pad or foil stays on
+    /// one face, and the medium crosses the opening.
+    pub(crate) fn parted(&self, [opening, beside]: [f64; 2], medium: impl Fn(f64) -> f64) -> f64 {
+        let open = |gap: f64| if gap > 0.0 { medium(gap).recip() } else { 0.0 };
         match &self.shape {
             Shape::Paste {
                 applied,
                 conductivity,
                 wetting,
                 ..
-            } => self.factor * (applied.max(opening) + wetting) / conductivity,
-            _ if opening > 0.0 => self.resistance(0.0) + medium(opening).recip(),
-            _ => self.resistance(0.0),
+            } => {
+                let gap = self.thickness(beside) + opening;
+                self.factor * (gap.min(*applied) + wetting) / conductivity + open(gap - applied)
+            }
+            _ => self.resistance(0.0) + open(opening),
         }
     }
 }

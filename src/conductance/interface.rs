@@ -74,6 +74,9 @@ pub struct Interface {
     pub solid_factor: f64,
     /// Scatter of the filler: multiplies its resistance; 1 nominal.
     pub filler_factor: f64,
+    /// Pressure over true strain of a layer, Pa, where the pressure is that on the layer itself; none
+    /// keeps its thickness.
+    pub filler_modulus: Option<f64>,
 }
 
 impl Interface {

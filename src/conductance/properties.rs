@@ -105,6 +105,7 @@ fn interface() -> impl Strategy<Value = Interface> {
             measured,
             solid_factor: factors.0,
             filler_factor: factors.1,
+            filler_modulus: None,
         })
 }
 
@@ -157,7 +158,7 @@ proptest! {
         let local = interface.prepare();
         let mut before = local.unloaded();
         for step in 0..60 {
-            let parted = local.parted(1e-8 * 10f64.powf(f64::from(step) * 0.1));
+            let parted = local.parted(1e-8 * 10f64.powf(f64::from(step) * 0.1), 0.0);
             prop_assert!(parted.is_finite() && parted >= 0.0 && parted <= before);
             before = parted;
         }

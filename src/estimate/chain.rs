@@ -7,8 +7,10 @@ mod form;
 mod geometry;
 mod levels;
 mod temperatures;
+mod warmth;
 
 pub(super) use levels::LARGE_ERROR;
+pub(in crate::estimate) use warmth::Warmth;
 
 use std::borrow::Cow;
 
@@ -347,6 +349,15 @@ impl<'a> Chain<'a> {
         match &self.model {
             Model::Cone(_) => false,
             Model::Elastic(_) => true,
+        }
+    }
+
+    /// Mean pressure where the first interface touches, Pa, first case at nominal; 0 for the cone, whose
+    /// faces part nowhere.
+    pub(super) fn pressing(&self) -> f64 {
+        match &self.model {
+            Model::Cone(_) => 0.0,
+            Model::Elastic(model) => model.pressing(self),
         }
     }
 

@@ -3,7 +3,7 @@
 use crate::{
     catalog::{Datum, Material},
     conductance::{Face, Hardness, Interface, Layer, gas},
-    estimate::{Failure, Realisation},
+    estimate::{Failure, Realisation, chain::Warmth},
     joint::{Facing, Joint, Measured, MeasuredKind, Medium, Plate},
 };
 
@@ -35,25 +35,30 @@ pub fn conductivity(plate: &Plate, temperature: f64, place: f64) -> Result<f64, 
     Ok(value * factor_at(datum, CONDUCTIVITY_FACTOR, place))
 }
 
-/// Conductivity of every plate at the temperature of a case, W/(m K).
-pub fn conductivities(joint: &Joint, case: usize, at: &Realisation) -> Result<Vec<f64>, Failure> {
-    let temperature = joint.service.cases[case].temperature;
+/// Conductivity of every plate at its temperature, W/(m K).
+pub fn conductivities(
+    joint: &Joint,
+    warmth: &Warmth,
+    at: &Realisation,
+) -> Result<Vec<f64>, Failure> {
     let plates = joint.plates.iter().enumerate();
     plates
-        .map(|(index, plate)| conductivity(plate, temperature, at.conductivity_of(joint, index)))
+        .map(|(index, plate)| {
+            let place = at.conductivity_of(joint, index);
+            conductivity(plate, warmth.plate(index), place)
+        })
         .collect()
 }
 
-/// Everything the laws need of an interface (0 is the warmest), at the temperature of a case.
+/// Everything the laws need of an interface (0 is the warmest), at a temperature in K.
 ///
 /// Roughness and slope of the warm faces lie at one place of their ranges in all interfaces, and so
 /// do those of the cold faces: the same shop makes them. Law, hardness, filler and gas move alike.
 pub fn interface(
     joint: &Joint,
-    (case, index): (usize, usize),
+    (index, temperature): (usize, f64),
     at: &Realisation,
 ) -> Result<Interface, Failure> {
-    let temperature = joint.service.cases[case].temperature;
     let filler = joint.filler(index);
     let measured = joint.measured.as_ref();
     Ok(Interface {
@@ -78,6 +83,7 @@ pub fn interface(
             .map_or(LAW_FACTOR, |measured| measured.factor)
             .powf(at.law),
         filler_factor: filler.map_or(1.0, |filler| filler.factor.powf(at.filler)),
+        filler_modulus: None,
     })
 }
 

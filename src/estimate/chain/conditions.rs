@@ -2,7 +2,11 @@
 
 use crate::{
     conductance::{Curve, Local},
-    estimate::{Chain, Failure, Realisation, surfaces},
+    estimate::{
+        Chain, Failure, Realisation,
+        chain::{Model, Warmth},
+        surfaces,
+    },
     joint::MeasuredKind,
     resistance::Load,
 };
@@ -90,7 +94,29 @@ impl Conditions {
 
 impl Chain<'_> {
     /// Forces, faces and conductivities of one case at one realisation: all that heat meets.
+    ///
+    /// Properties are those at the mean temperatures of the plates in the nominal state, where these
+    /// are solved and the heat is stated; else those at the sink.
     pub(super) fn conditions(&self, case: usize, at: &Realisation) -> Result<Conditions, Failure> {
+        match &self.model {
+            Model::Cone(_) => self.conditions_at(case, &self.cold(case), at),
+            Model::Elastic(model) => self.conditions_at(case, model.warmth(self, case)?, at),
+        }
+    }
+
+    /// All plates as cold as the sink.
+    pub(super) fn cold(&self, case: usize) -> Warmth {
+        let joint = self.joint();
+        Warmth::uniform(joint.plates.len(), joint.service.cases[case].temperature)
+    }
+
+    /// The same with plates of known temperature.
+    pub(super) fn conditions_at(
+        &self,
+        case: usize,
+        warmth: &Warmth,
+        at: &Realisation,
+    ) -> Result<Conditions, Failure> {
         let joint = self.joint();
         let by_group: Vec<f64> = joint
             .fasteners
@@ -103,7 +129,13 @@ impl Chain<'_> {
         let law = self.force_law(&forces, temperature);
         let faces = (0..joint.interfaces())
             .map(|index| {
-                let interface = surfaces::interface(joint, (case, index), at)?;
+                let place = (index, warmth.interface(index));
+                let mut interface = surfaces::interface(joint, place, at)?;
+                if self.knows_the_gap() {
+                    // Only a solved field knows how a layer is pressed.
+                    interface.filler_modulus =
+                        joint.filler(index).and_then(|filler| filler.modulus);
+                }
                 Ok(Faces {
                     local: interface.prepare(),
                     per_pascal: law.map(|law| law * interface.solid_factor),
@@ -114,8 +146,8 @@ impl Chain<'_> {
             forces,
             faces,
             temperature,
-            conductivity: surfaces::conductivities(joint, case, at)?,
-            shanks: self.shanks(temperature)?,
+            conductivity: surfaces::conductivities(joint, warmth, at)?,
+            shanks: self.shanks(warmth.bolts())?,
         })
     }
 

@@ -15,7 +15,7 @@ use crate::{
     estimate::{
         Chain, ConeBeside, Failure, Fineness, InterfaceResult, Meeting, PressureResult,
         Realisation, RingRow, Watch,
-        chain::{PressedEdge, conditions::Conditions},
+        chain::{PressedEdge, Warmth, conditions::Conditions},
     },
     joint::{Joint, Medium},
     resistance::Path,
@@ -28,6 +28,12 @@ pub(super) use solver::Solved;
 use solver::{Factors, Solver};
 use spread::Spread;
 use variant::Variant;
+
+/// Plates whose temperature is that near to where their properties were taken are left there, relative:
+/// conductivities go with at most the third power of it, in cryogenic copper, and so move by 0.6 %.
+const WARM_ENOUGH: f64 = 0.002;
+/// Times that properties are taken anew at the temperatures they lead to.
+const MOST_WARMINGS: usize = 8;
 
 /// The solved field of a joint, brought to the forces and the medium of a chain.
 #[derive(Clone, Debug)]
@@ -45,10 +51,24 @@ pub(super) struct ElasticModel {
 /// What one case is at nominal, and what the draws need.
 #[derive(Debug)]
 struct Case {
+    warmth: Warmth,
     conditions: Conditions,
     /// None where no bolt clamps any more.
     solved: Option<Arc<dyn Solved>>,
     spread: OnceLock<Result<Arc<Spread>, Failure>>,
+}
+
+impl Case {
+    /// Mean temperatures of the plates under the stated heat; none where they are those at which the
+    /// properties were taken.
+    fn warmed(&self, chain: &Chain, case: usize) -> Option<Warmth> {
+        let service = &chain.joint().service;
+        let heat = service.heat?;
+        let means = self.solved.as_ref()?.temperatures().plate_means;
+        let sink = service.cases[case].temperature;
+        let warmth = Warmth::above(sink, means.iter().map(|mean| heat * mean));
+        (warmth.apart(&self.warmth) > WARM_ENOUGH).then_some(warmth)
+    }
 }
 
 impl ElasticModel {
@@ -98,22 +118,40 @@ impl ElasticModel {
     fn case(&self, chain: &Chain, index: usize) -> Result<&Case, Failure> {
         self.cases[index]
             .get_or_init(|| {
-                let conditions = chain.conditions(index, &Realisation::default())?;
-                let solved = if conditions.forces.iter().sum::<f64>() > 0.0 {
-                    chain.refuse_open(index, &conditions.forces)?;
-                    let stated = (self.level(), Variant::Stated);
-                    Some(self.solved(chain, stated, (&conditions, &Factors::NONE))?)
-                } else {
-                    None
-                };
-                Ok(Case {
-                    conditions,
-                    solved,
-                    spread: OnceLock::new(),
-                })
+                let mut case = self.case_at(chain, (index, chain.cold(index)))?;
+                for _ in 0..MOST_WARMINGS {
+                    let Some(warmth) = case.warmed(chain, index) else {
+                        break;
+                    };
+                    case = self.case_at(chain, (index, warmth))?;
+                }
+                Ok(case)
             })
             .as_ref()
             .map_err(Clone::clone)
+    }
+
+    /// A case with properties at some temperatures.
+    fn case_at(&self, chain: &Chain, (index, warmth): (usize, Warmth)) -> Result<Case, Failure> {
+        let conditions = chain.conditions_at(index, &warmth, &Realisation::default())?;
+        let solved = if conditions.forces.iter().sum::<f64>() > 0.0 {
+            chain.refuse_open(index, &conditions.forces)?;
+            let stated = (self.level(), Variant::Stated);
+            Some(self.solved(chain, stated, (&conditions, &Factors::NONE))?)
+        } else {
+            None
+        };
+        Ok(Case {
+            warmth,
+            conditions,
+            solved,
+            spread: OnceLock::new(),
+        })
+    }
+
+    /// Temperatures at which the properties of a case are taken.
+    pub(super) fn warmth(&self, chain: &Chain, case: usize) -> Result<&Warmth, Failure> {
+        Ok(&self.case(chain, case)?.warmth)
     }
 
     /// A case in which bolts clamp, with its contact and heat.
@@ -177,6 +215,14 @@ impl ElasticModel {
     /// Contact and heat of a case at nominal.
     pub(super) fn of_case(&self, chain: &Chain, case: usize) -> Result<&dyn Solved, Failure> {
         self.closed(chain, case).map(|(_, solved)| solved)
+    }
+
+    /// Mean pressure of the first interface in the first case, Pa; 0 where no bolt clamps.
+    pub(super) fn pressing(&self, chain: &Chain) -> f64 {
+        let closed = self.closed(chain, 0);
+        closed.map_or(0.0, |(_, solved)| {
+            solved.met().first().map_or(0.0, |met| met.pressure)
+        })
     }
 
     /// How the faces of the first case meet at a point.

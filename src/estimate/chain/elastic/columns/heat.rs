@@ -6,7 +6,7 @@ use crate::{
     estimate::chain::{
         conditions::Conditions,
         elastic::{
-            columns::{problem::Order, terminals::Ends},
+            columns::{problem::Order, readings::mean_pressure, terminals::Ends},
             solver::Factors,
         },
     },
@@ -153,7 +153,8 @@ pub(super) fn conductances(
             let laws = &conditions.faces[order.plate(index, field.faces.len())];
             let highest = face.pressure.iter().copied().fold(0.0, f64::max);
             let touching = laws.over_many_points(highest);
-            let parted = |gap: f64| factors.parted * laws.local.parted(gap);
+            let beside = mean_pressure(face);
+            let parted = |gap: f64| factors.parted * laws.local.parted(gap, beside);
             let columns = face.pressure.iter().zip(&face.gap).zip(&face.weight);
             let own = columns
                 .map(|((pressure, gap), weight)| {
@@ -166,12 +167,12 @@ pub(super) fn conductances(
                     }
                 })
                 .collect();
-            let beside = face.open_gap.iter().zip(&face.open_weight);
-            let beside: Vec<f64> = beside
+            let open = face.open_gap.iter().zip(&face.open_weight);
+            let open: Vec<f64> = open
                 .map(|(gap, weight)| if *weight > 0.0 { parted(*gap) } else { 0.0 })
                 .collect();
             if face.open_weight.iter().any(|weight| *weight > 0.0) {
-                vec![own, beside]
+                vec![own, open]
             } else {
                 vec![own]
             }
