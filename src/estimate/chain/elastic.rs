@@ -281,7 +281,22 @@ impl ElasticModel {
     fn spread_of(&self, chain: &Chain, index: usize) -> Result<&Spread, Failure> {
         let case = self.case(chain, index)?;
         let forces: f64 = case.conditions.forces.iter().sum();
-        self.spread_over(chain, index, chain.force_range(index, forces))
+        let mut range = chain.force_range(index, forces);
+        if index == 0 {
+            // The other cases may read their draws here.
+            for other in 1..self.cases.len() {
+                let [low, high] = chain.force_range(other, forces);
+                range = [range[0].min(low), range[1].max(high)];
+            }
+        }
+        self.spread_over(chain, index, range)
+    }
+
+    /// The spread of the first case, where it has one.
+    fn spread_of_first(&self, chain: &Chain) -> Option<&Arc<Spread>> {
+        self.spread_of(chain, 0).ok()?;
+        let first = self.case(chain, 0).ok()?.spread.get()?;
+        first.as_ref().ok()
     }
 
     /// The spread of a case over a range of force: its own, or that of the chain this one comes
@@ -309,8 +324,19 @@ impl ElasticModel {
                 }
                 let first = match index {
                     0 => None,
-                    _ => self.spread_of(chain, 0).ok(),
+                    _ => self.spread_of_first(chain),
                 };
+                if let Some(first) = first
+                    && first
+                        .response
+                        .holds(&first.gauge.departure(&case.conditions))
+                    && first
+                        .response
+                        .covers(chain.force_range(index, first.gauge.force()))
+                {
+                    return Ok(first.clone());
+                }
+                let first = first.map(Arc::as_ref);
                 self.spread(chain, (index, &case.conditions), (range, first))
                     .map(Arc::new)
             })

@@ -252,6 +252,13 @@ impl Response {
         low.max(LEAST_FORCE).ln() >= ends[0] - ROUNDING && high.ln() <= ends[1] + ROUNDING
     }
 
+    /// Whether conditions that lie there are near enough to have their draws read here: a draw goes
+    /// as far again.
+    pub(super) fn holds(&self, departure: &Departure) -> bool {
+        let rest = departure[1..].iter().zip(self.steps);
+        rest.into_iter().all(|(off, step)| off.abs() <= 0.5 * step)
+    }
+
     /// The path at a departure on the level of the surfaces themselves.
     pub(super) fn alone(&self, departure: &Departure) -> Path {
         self.applied(&self.base, (&[0.0; VARIABLES], departure))
