@@ -65,6 +65,14 @@ impl Faces {
         }
     }
 
+    /// The same faces when nothing presses them: what they conduct without pressure, at any.
+    pub(super) fn unpressed(&self) -> Self {
+        Self {
+            per_pascal: Some(0.0),
+            ..self.clone()
+        }
+    }
+
     /// The same for many points up to a pressure, from a table of the law where it has no corner.
     pub fn over_many_points(&self, highest_pressure: f64) -> impl Fn(f64) -> f64 {
         let curve = match self.per_pascal {

@@ -344,16 +344,6 @@ pub(super) fn at_force(force: f64) -> Departure {
     at(force, &[0.0; VARIABLES - 1])
 }
 
-/// The departure that stands for no force at all: the least force of a range, with contact that
-/// conducts next to nothing where the faces touch.
-pub(super) fn open(range: [f64; 2]) -> Departure {
-    const NEXT_TO_NOTHING: f64 = 1e-9;
-    let mut departure = [0.0; VARIABLES];
-    departure[0] = forces(range)[0];
-    departure[1] = NEXT_TO_NOTHING.ln();
-    departure
-}
-
 fn at(force: f64, rest: &[f64]) -> Departure {
     std::array::from_fn(|variable| match variable {
         0 => force,

@@ -105,7 +105,14 @@ impl ElasticModel {
             self.departed(chain, nominal, &departure)?;
         }
         let open = if range[0] <= 0.0 {
-            Some(self.departed(chain, nominal, &response::open(range))?)
+            // The gaps of the least force, and no pressure where the faces lie on each other: a
+            // filler and gas conduct there all the same.
+            let loose = Conditions {
+                faces: nominal.faces.unpressed(),
+                ..nominal.clone()
+            };
+            let [least, ..] = response::ends(range);
+            Some(self.departed(chain, &loose, &response::at_force(least))?)
         } else {
             None
         };

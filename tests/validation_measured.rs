@@ -1,0 +1,44 @@
+//! The chain against joints that others measured or tabulated, with catalogue inputs and no tuning.
+//!
+//! `data/bolted_cases.toml` holds the cases with the status of every value, `data/joints/measured/` a joint
+//! file for each that can be expressed; what is assumed stands in its head. All are run on the elastic
+//! field at `fast`.
+
+#[path = "validation_measured/contact.rs"]
+mod contact;
+#[path = "validation_measured/table.rs"]
+mod table;
+#[path = "validation_measured/trends.rs"]
+mod trends;
+
+use ringsum::{
+    estimate::{CaseResult, Chain, Choice, Fineness, Options, Realisation, Watch},
+    joint::{self, Joint},
+    resistance::Path,
+    uncertainty,
+};
+
+/// More than any of these joints takes, bytes.
+const MEMORY: u64 = 4_000_000_000;
+
+/// A joint with its first case on the elastic field at `fast`.
+fn solved(joint: &Joint, draws: u32) -> CaseResult {
+    let choice = Choice::elastic(Fineness::Fast, MEMORY);
+    let chain = Chain::of(joint, choice, &Watch::none()).expect("a field");
+    let options = Options { draws, seed: 1 };
+    let found = uncertainty::along(&chain, &options).expect("a number");
+    found.cases.into_iter().next().expect("a case")
+}
+
+/// Nominal resistances alone: no coarser level, no cone beside them.
+fn path(joint: &Joint) -> Path {
+    let choice = Choice::elastic(Fineness::Fast, MEMORY);
+    let chain = Chain::of(joint, choice, &Watch::none()).expect("a field");
+    let state = chain.state(0, &Realisation::default());
+    state.expect("a state").path
+}
+
+fn read(text: &str, sets: &[&str]) -> Joint {
+    let sets: Vec<String> = sets.iter().map(|set| (*set).to_owned()).collect();
+    joint::read_with(text, &sets).unwrap_or_else(|faults| panic!("{faults:#?}"))
+}
