@@ -24,9 +24,15 @@ const INSERT: &str = "Al 6061-T6";
 pub(super) fn read(plate: &Record, own: &Own, collector: &mut Collector) -> Option<Sandwich> {
     let record = plate.record("sandwich")?;
     for (key, why) in [
-        ("feet", "a sandwich panel has plain faces: put the feet on the other plate"),
+        (
+            "feet",
+            "a sandwich panel has plain faces: put the feet on the other plate",
+        ),
         ("ribs", "a sandwich panel has plain faces"),
-        ("sag", "the curvature of a sandwich by its heat is not known here: state a `bow`"),
+        (
+            "sag",
+            "the curvature of a sandwich by its heat is not known here: state a `bow`",
+        ),
     ] {
         if plate.has(key) {
             collector.report(
@@ -125,17 +131,24 @@ pub(super) fn flange(
         if !is_insert {
             let key = ["flange", "proud"].into_iter().find(|key| table.has(key))?;
             collector.report(
-                fault("fastener/flange", &table.span(key), format!("`{key}` belongs to inserts"))
-                    .expecting("this engagement is no insert")
-                    .help("`engagement = { kind = \"insert\", length = \"12 mm\", flange = \"14 mm\" }`"),
+                fault(
+                    "fastener/flange",
+                    &table.span(key),
+                    format!("`{key}` belongs to inserts"),
+                )
+                .expecting("this engagement is no insert")
+                .help(
+                    "`engagement = { kind = \"insert\", length = \"12 mm\", flange = \"14 mm\" }`",
+                ),
             );
             return None;
         }
         of_insert(table, (hole, panel), collector)
     });
-    if let (Engagement::Insert { length }, Some(sheet)) =
-        (engagement, panel.and_then(|panel| panel.number("face_sheet")))
-    {
+    if let (Engagement::Insert { length }, Some(sheet)) = (
+        engagement,
+        panel.and_then(|panel| panel.number("face_sheet")),
+    ) {
         collector.require(length > sheet, || {
             let place = table.map_or_else(|| fastener.place.clone(), |table| table.span("length"));
             refused(
@@ -183,7 +196,7 @@ fn of_insert(
     if !table.has("proud") {
         collector.assume(
             table.at("proud"),
-            "0 m",
+            "flush",
             "not stated; a flange that stands out keeps the faces apart beside it",
         );
     }
@@ -212,9 +225,12 @@ pub(super) fn cooled(plate: &PlateDraft, sink: Option<&Cooling>, collector: &mut
 /// Refuses a sandwich between other plates.
 pub(super) fn between(plate: &Record, collector: &mut Collector) {
     collector.require(!plate.has("sandwich"), || {
-        refused(&plate.span("sandwich"), "a sandwich panel lies between other plates")
-            .expecting("expected it first or last")
-            .help("its inserts hold the bolts, and these end in an outer plate")
+        refused(
+            &plate.span("sandwich"),
+            "a sandwich panel lies between other plates",
+        )
+        .expecting("expected it first or last")
+        .help("its inserts hold the bolts, and these end in an outer plate")
     });
 }
 

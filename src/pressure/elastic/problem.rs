@@ -51,6 +51,19 @@ pub struct Layer<'a> {
     pub poisson: f64,
     /// Polynomials through it; none leaves it to the fineness.
     pub through: Option<Through>,
+    /// What another material fills of it: inserts in a core.
+    pub inlay: Option<Inlay<'a>>,
+}
+
+/// A part of a layer that is of another material, bonded to the rest.
+#[derive(Clone, Copy)]
+pub struct Inlay<'a> {
+    /// Where it is, as far as the layer is there.
+    pub cover: &'a Cover<'a>,
+    /// Young's modulus, Pa.
+    pub youngs_modulus: f64,
+    /// Poisson's ratio, −1 to 0.5, 1.
+    pub poisson: f64,
 }
 
 /// Polynomials through a layer.
