@@ -228,6 +228,13 @@ impl Problem<'_> {
 }
 
 impl Body<'_> {
+    /// Thickness that bends as one: that of the plate, with core and sheets where inserts bind them, m.
+    pub(super) fn bending_thickness(&self) -> f64 {
+        let bound = self.layers.iter().filter(|layer| layer.inlay.is_some());
+        let bound: f64 = bound.map(|layer| layer.thickness).sum();
+        bound.max(self.layers[self.main].thickness)
+    }
+
     /// Thickness of all layers, m.
     pub(super) fn thickness(&self) -> f64 {
         self.layers.iter().map(|layer| layer.thickness).sum()
