@@ -8,6 +8,8 @@ mod fillers;
 mod heat;
 #[path = "reader/plates.rs"]
 mod plates;
+#[path = "reader/sandwich.rs"]
+mod sandwich;
 #[path = "reader/stacks.rs"]
 mod stacks;
 

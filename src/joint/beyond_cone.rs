@@ -40,6 +40,11 @@ impl Joint {
                     "the cone takes plates of one thickness",
                 ),
                 (
+                    plate.sandwich.is_some(),
+                    "sandwich",
+                    "closed forms know solid plates",
+                ),
+                (
                     plate.flatness_map.is_some(),
                     "flatness_map",
                     "the cone takes faces as flat",
@@ -61,6 +66,12 @@ impl Joint {
             for (_, key, why) in stated.into_iter().filter(|(is_stated, ..)| *is_stated) {
                 needs.push((field(key), why));
             }
+        }
+        if !self.is_flush() {
+            needs.push((
+                "fastener.engagement.proud".into(),
+                "the cone takes faces that meet",
+            ));
         }
         let field = |plate: &Plate, key: &str| format!("plate.{}.{key}", plate.name);
         if self.source.alone().is_none() {
@@ -94,7 +105,8 @@ mod tests {
 
     use super::*;
     use crate::joint::{
-        CooledPart, Cooling, Edge, Feet, FlatnessMap, Heating, Patch, Rib, fixture,
+        CooledPart, Cooling, Edge, Feet, Flange, FlatnessMap, Heating, Patch, Rib, Sandwich,
+        fixture,
     };
 
     #[test]
@@ -124,6 +136,16 @@ mod tests {
         });
         upper.flatness_map =
             FlatnessMap::new(vec![[0.0, 0.0, 0.0], [1.0, 0.0, 0.0], [0.0, 1.0, 0.0]]).map(Arc::new);
+        lower.sandwich = Some(Sandwich {
+            face_sheet: 1e-3,
+            core_conductivity: 1.0,
+            core_modulus: 1e9,
+            insert: lower.material.clone(),
+        });
+        joint.fasteners[0].flange = Some(Flange {
+            radius: 6e-3,
+            proud: 1e-4,
+        });
         lower.ribs = vec![Rib {
             patch,
             height: 1e-3,
@@ -148,8 +170,10 @@ mod tests {
                 "plate.box.feet",
                 "plate.box.flatness_map",
                 "plate.panel.ribs",
+                "plate.panel.sandwich",
                 "plate.panel.sag",
                 "plate.panel.conductivity",
+                "fastener.engagement.proud",
                 "plate.box.heated",
                 "plate.panel.cooled",
                 "contact.head_model",

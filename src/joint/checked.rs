@@ -3,6 +3,7 @@
 mod flatness_map;
 mod heat;
 mod plates;
+mod sandwich;
 
 use crate::{catalog, diagnostic::Assumption};
 
@@ -11,6 +12,7 @@ pub use heat::{CooledPart, Cooling, Edge, HeatedZone, Heating, Sink, Source, Zon
 pub use plates::{
     Bimetal, Coating, Facing, Feet, Finish, Outline, Patch, Plate, Rib, Sag, Underside,
 };
+pub use sandwich::{Flange, Ply, PlyKind, Sandwich};
 
 /// Most plates of a joint.
 pub const MOST_PLATES: usize = 6;
@@ -191,6 +193,8 @@ pub struct Fastener {
     pub cylindrical_head: bool,
     /// How the far end holds.
     pub engagement: Engagement,
+    /// The flange of its inserts, where it is stated.
+    pub flange: Option<Flange>,
     /// How the bolt is tightened.
     pub tightening: Tightening,
     /// Index of the plate on which the head sits.

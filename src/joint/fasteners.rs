@@ -4,7 +4,7 @@ use crate::{
     catalog::{self, Grade, Thread},
     diagnostic::Fault,
     joint::{
-        Engagement, Fastener, MOST_PLACES, MOST_PLATES,
+        Engagement, Fastener, Flange, MOST_PLACES, MOST_PLATES,
         collector::{Collector, Wording, fault},
         isolating,
         lands::{self, Land, Site},
@@ -12,6 +12,7 @@ use crate::{
         patterns,
         plates::PlateDraft,
         record::Record,
+        sandwich,
         seats::{self, Bolt, Parts, Seats, unknown_plate},
         tightening,
         tree::short,
@@ -89,8 +90,15 @@ fn group(
             parts,
         };
         let holes = seats::holes(bolt, plates, collector)?;
+        let flange = sandwich::flange(
+            record,
+            (engagement, holes[far]),
+            [&plates[head_plate], &plates[far]],
+            collector,
+        )?;
         Some(Seated {
             engagement,
+            flange,
             head_plate,
             count: plates.len(),
             holes,
@@ -118,6 +126,7 @@ fn group(
             washers: seated.seats.washers,
             cylindrical_head: seated.seats.cylindrical,
             engagement: seated.engagement,
+            flange: seated.flange,
             tightening: tightening?,
             head_plate: seated.head_plate,
             shank_path: shank_path?,
@@ -137,6 +146,7 @@ fn group(
 #[derive(Clone, Copy, Debug)]
 struct Seated {
     engagement: Engagement,
+    flange: Option<Flange>,
     head_plate: usize,
     /// Number of plates.
     count: usize,
@@ -148,11 +158,15 @@ impl Seated {
     fn land(self) -> Land {
         let mut seats = [0.0; MOST_PLATES];
         seats[self.head_plate] = self.seats.head.outer_radius;
-        seats[self.count - 1 - self.head_plate] =
-            self.seats.nut.map_or(0.0, |nut| nut.outer_radius);
+        let (far, part) = match (self.seats.nut, self.flange) {
+            (None, Some(flange)) => (flange.radius, "flange"),
+            (nut, _) => (nut.map_or(0.0, |nut| nut.outer_radius), "nut"),
+        };
+        seats[self.count - 1 - self.head_plate] = far;
         Land {
             holes: self.holes,
             seats,
+            far: part,
             head_plate: self.head_plate,
         }
     }

@@ -22,6 +22,8 @@ pub(super) struct Land {
     pub holes: [f64; MOST_PLATES],
     /// Outer radius of the seat on the outer face of each plate, m.
     pub seats: [f64; MOST_PLATES],
+    /// What the seat on the plate at the other end is: `nut` or `flange`.
+    pub far: &'static str,
     /// Plate on which the head sits.
     pub head_plate: usize,
 }
@@ -78,7 +80,7 @@ fn beyond(land: Land, index: usize, point: [f64; 2], plate: &PlateDraft) -> Opti
     let part = if index == land.head_plate {
         "head"
     } else {
-        "nut"
+        land.far
     };
     if depth + SLACK >= seat {
         let parts = plate.parts.as_ref()?;
@@ -145,7 +147,7 @@ pub(super) fn apart(sites: &[Site], collector: &mut Collector) {
             let (code, what) = if meet(land.holes, other.holes) {
                 ("plate/holes-overlap", "holes")
             } else if meet(land.seats, other.seats) {
-                ("plate/heads-overlap", "heads or nuts")
+                ("plate/heads-overlap", seats_of([land, other]))
             } else {
                 continue;
             };
@@ -170,6 +172,15 @@ pub(super) fn apart(sites: &[Site], collector: &mut Collector) {
                 )),
             );
         }
+    }
+}
+
+/// What may overlap of two bolts besides their holes.
+fn seats_of(lands: [&Land; 2]) -> &'static str {
+    if lands.iter().any(|land| land.far == "flange") {
+        "heads or flanges"
+    } else {
+        "heads or nuts"
     }
 }
 

@@ -68,6 +68,16 @@ pub(super) fn of_plate(plate: &Record, own: &Own, collector: &mut Collector) -> 
     Some(material)
 }
 
+/// Reads a material that stands under a key of its own.
+pub(super) fn at(
+    record: &Record,
+    key: &str,
+    own: &Own,
+    collector: &mut Collector,
+) -> Option<Material> {
+    read(record.record(key)?, own, collector)
+}
+
 /// Two tables with one name.
 pub(super) fn duplicate(what: &str, name: &str, span: &Span) -> crate::diagnostic::Fault {
     fault(

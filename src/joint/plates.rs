@@ -5,14 +5,14 @@ use std::sync::Arc;
 use crate::{
     catalog::Material,
     joint::{
-        Finish, FlatnessMap, MOST_PLATES, Outline, Plate, Sag, Underside,
+        Finish, FlatnessMap, MOST_PLATES, Outline, Plate, Sag, Sandwich, Underside,
         collector::{Collector, Wording, fault},
         finishes,
         maps::Tables,
         materials::{self, Own},
         patches::{self, Parts},
         record::Record,
-        sag,
+        sag, sandwich,
         sections::plate_name,
         stacking,
         walk::missing,
@@ -44,6 +44,8 @@ pub(super) struct PlateDraft {
     pub flatness_map: Option<Arc<FlatnessMap>>,
     /// Thermal sag.
     pub sag: Option<Sag>,
+    /// Core between two face sheets.
+    pub sandwich: Option<Sandwich>,
     /// Cut-outs, feet and ribs.
     pub parts: Option<Parts>,
 }
@@ -60,7 +62,9 @@ impl PlateDraft {
         if lost("flatness_map", self.flatness_map.is_none()) || lost("sag", self.sag.is_none()) {
             return None;
         }
-        if lost("finish_below", self.finish_below.is_none()) {
+        if lost("finish_below", self.finish_below.is_none())
+            || lost("sandwich", self.sandwich.is_none())
+        {
             return None;
         }
         let parts = self.parts?;
@@ -90,6 +94,7 @@ impl PlateDraft {
                 .collect(),
             feet: parts.feet,
             ribs: parts.ribs.into_iter().map(|(rib, _)| rib).collect(),
+            sandwich: self.sandwich,
         })
     }
 }
@@ -183,6 +188,7 @@ fn draft(record: &Record, default_name: &str, own: &Own, collector: &mut Collect
         name: record.text("name").unwrap_or(default_name).to_owned(),
         material: materials::of_plate(record, own, collector),
         thickness: record.number("thickness"),
+        sandwich: sandwich::read(record, own, collector),
         parts: patches::read(record, outline.as_ref(), collector),
         outline,
         origin: None,

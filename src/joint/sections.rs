@@ -4,6 +4,7 @@ mod fasteners;
 mod filler;
 mod heat;
 mod plates;
+mod sandwich;
 
 use crate::{
     joint::{
@@ -21,6 +22,7 @@ pub use plates::{
     BIMETAL, BOW, CUTOUT, FEET, FINISH, FOOT, MATERIAL, MATERIAL_INLINE, MICROHARDNESS, PLATE,
     PLATING, RIB, SAG,
 };
+pub use sandwich::SANDWICH;
 
 /// The newest format this version reads.
 pub const FORMAT: usize = 1;

@@ -6,6 +6,7 @@ use crate::joint::{
     materials::duplicate,
     plates::PlateDraft,
     record::Record,
+    sandwich,
     tree::Span,
 };
 
@@ -97,6 +98,7 @@ fn outside(record: &Record, collector: &mut Collector) {
 
 /// A plate between others has no outer face, and both its faces lie on neighbours.
 fn between(record: &Record, collector: &mut Collector) {
+    sandwich::between(record, collector);
     let mut refuse = |span: Span, key: &str, why: &str| {
         collector.report(
             fault(

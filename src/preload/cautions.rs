@@ -283,13 +283,15 @@ fn threads(group: &Group<'_>) -> Vec<Caution> {
         ));
     }
     if let Engagement::Insert { .. } = fastener.engagement {
-        found.push(caution(
-            "preload/insert",
+        let text = if fastener.flange.is_some() {
+            format!("{name}: pull-out of the insert is not checked; use the maker's pull-out load.")
+        } else {
             format!(
                 "{name}: pull-out of the insert and an insert standing proud of the face are not checked; use the \
-                 maker's pull-out load and seat it below the face."
-            ),
-        ));
+                 maker's pull-out load and seat it below the face, or state its `flange` and how `proud` it is."
+            )
+        };
+        found.push(caution("preload/insert", text));
     }
     let stainless = ["304", "316", "a2", "a4", "18-8"]
         .iter()

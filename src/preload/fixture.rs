@@ -85,6 +85,7 @@ pub fn m6() -> Fastener {
             },
             scatter: None,
         }),
+        flange: None,
         head_plate: 0,
         shank_path: true,
         isolating: None,
@@ -146,6 +147,7 @@ fn plate(name: &str, thickness: f64) -> Plate {
         cutouts: Vec::new(),
         feet: None,
         ribs: Vec::new(),
+        sandwich: None,
     }
 }
 

@@ -13,8 +13,8 @@ mod table;
 pub use field::{FaceField, Field, Health, Place};
 pub use mesh::{Mesh, MeshBody, MeshFace, MeshLayer};
 pub use problem::{
-    Annulus, Body, Bolt, Compliance, Cover, End, Faces, Fineness, Head, Height, Interface, Layer,
-    Problem, Progress, Stage, Through,
+    Annulus, Body, Bolt, Compliance, Cover, End, Faces, Fineness, Head, Height, Inlay, Interface,
+    Layer, Problem, Progress, Stage, Through,
 };
 pub use resolution::Size;
 pub use table::Table;

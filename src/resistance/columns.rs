@@ -53,6 +53,6 @@ mod zone;
 pub use conduction::{Conduction, Perfect, solve_both};
 pub use heat::{Health, Heat, Hottest};
 pub use section::{Across, Section};
-pub use stack::{Body, Conductivity, Meeting, Side, Slab, Stack};
+pub use stack::{Body, Conductivity, Meeting, Part, Side, Slab, Stack};
 pub use terminals::{Bolt, Edge, Rim, Seat, Sink, Source, Terminals};
 pub use zone::Zone;

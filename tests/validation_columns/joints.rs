@@ -47,6 +47,7 @@ impl Plates {
             compliance: Compliance::Hard,
             thread: None,
             through: None,
+            inlay: None,
             fineness: Fineness::Fast,
             most_bytes: 1_000_000_000,
         }

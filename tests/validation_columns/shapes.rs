@@ -27,6 +27,7 @@ fn layer<'a>(cover: &'a Cover<'a>, thickness: f64) -> Layer<'a> {
             elements: 1,
             degree: 2,
         }),
+        inlay: None,
     }
 }
 

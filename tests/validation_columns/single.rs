@@ -57,6 +57,7 @@ fn field(case: &Case, fineness: Fineness, others: &[[f64; 2]]) -> Field {
             youngs_modulus: 1e9 * case.modulus[plate],
             poisson: case.poisson,
             through: None,
+            inlay: None,
         }],
         main: 0,
         bounds: [[-rim, rim]; 2],

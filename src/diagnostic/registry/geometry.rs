@@ -211,4 +211,21 @@ pub(super) const ENTRIES: &[Entry] = &[
          what touches what.",
         "State feet on one of the two plates only, with the whole height between the faces.",
     ),
+    fault(
+        "plate/sandwich",
+        "A sandwich panel that cannot be",
+        "A sandwich is two face sheets of the plate's material on a core, `thickness` being that of the \
+         whole. It lies first or last, its faces are plain, it is not cooled at its edges, and the bolts \
+         end in inserts that reach through the face sheet: a head, a nut or a thread in the sheet would \
+         crush the core.",
+        "Check `sandwich` and `engagement`: `sandwich = { face_sheet = \"0.5 mm\", core_conductivity = \
+         \"1.2 W/(m·K)\" }` and `engagement = { kind = \"insert\", length = \"12 mm\", flange = \"14 mm\" }`.",
+    ),
+    fault(
+        "fastener/flange",
+        "A flange that is none",
+        "The flange of an insert lies on the faying face around the hole. It is wider than the hole, and \
+         only inserts have one.",
+        "State the outer diameter of the flange, or leave `flange` and `proud` out.",
+    ),
 ];

@@ -375,7 +375,8 @@ impl ElasticModel {
         let forces = &case.conditions.forces;
         let joint = chain.joint();
         // With several groups one torque changes the pattern, which no table follows.
-        if !joint.is_flat() && joint.fasteners.len() == 1 {
+        let meets = joint.is_flat() && joint.is_flush();
+        if !meets && joint.fasteners.len() == 1 {
             let low = low.max(response::LEAST_FORCE);
             self.solver
                 .tabulate(joint, self.level(), (forces, [low, high]))?;

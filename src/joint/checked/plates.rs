@@ -4,7 +4,7 @@ use std::sync::Arc;
 
 use crate::{
     catalog::{self, Material},
-    joint::{Bounds, FlatnessMap},
+    joint::{Bounds, FlatnessMap, Sandwich},
 };
 
 /// One plate.
@@ -40,6 +40,8 @@ pub struct Plate {
     pub feet: Option<Feet>,
     /// Parts of larger thickness on the outer face.
     pub ribs: Vec<Rib>,
+    /// Core between two face sheets, of which the material is then that of the plate.
+    pub sandwich: Option<Sandwich>,
 }
 
 /// The face towards the cold side of a plate between others.

@@ -164,6 +164,18 @@ pub static ENGAGEMENT: Section = Section {
         length("length", "engaged length of thread", "\"6 mm\"")
             .within(1e-4, 1.0)
             .default("thickness of the far plate; insert: 1.5 thread diameters"),
+        length(
+            "flange",
+            "inserts only: outer diameter of the flange on the faying face; in a sandwich it carries the clamp force",
+            "\"14 mm\"",
+        ),
+        length(
+            "proud",
+            "inserts only: height of the flange above the face around it",
+            "\"0.05 mm\"",
+        )
+        .within(0.0, 0.01)
+        .default("0 mm, flush"),
     ],
 };
 

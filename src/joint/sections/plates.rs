@@ -3,7 +3,7 @@
 use crate::{
     joint::{
         fields::{Catalogue, Field, Kind, Measure, Section, field},
-        sections::{CONDUCTIVITY, COOLED, HEATED},
+        sections::{CONDUCTIVITY, COOLED, HEATED, SANDWICH},
     },
     units::Quantity,
 };
@@ -41,6 +41,13 @@ pub static PLATE: Section = Section {
         length("thickness", "thickness", "\"5 mm\"")
             .within(1e-6, 10.0)
             .required(),
+        field(
+            "sandwich",
+            Kind::Table(&SANDWICH),
+            "first or last plate only: two face sheets of the plate's material on a core; bolts end in inserts",
+            "{ face_sheet = \"0.5 mm\", core_conductivity = \"1.2 W/(m·K)\" }",
+        )
+        .default("solid"),
         field(
             "size",
             Kind::Point,

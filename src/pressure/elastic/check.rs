@@ -51,6 +51,10 @@ fn body(body: &Body) -> Result<(), Failure> {
             layer.poisson > -1.0 && layer.poisson < 0.5,
             "a Poisson's ratio is not between −1 and 0.5",
         )?;
+        let inlay = layer.inlay.is_none_or(|inlay| {
+            positive(inlay.youngs_modulus) && inlay.poisson > -1.0 && inlay.poisson < 0.5
+        });
+        require(inlay, "an inlay has no modulus or Poisson's ratio")?;
         let through = layer.through.is_none_or(|through| {
             (1..=8).contains(&through.elements) && (1..=3).contains(&through.degree)
         });

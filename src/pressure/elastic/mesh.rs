@@ -34,6 +34,8 @@ pub struct MeshLayer {
     pub region: Region,
     /// Share of every cell that it fills, 1.
     pub shares: Vec<f64>,
+    /// The part of it that is of another material.
+    pub inlay: Option<Region>,
     /// Heights of its elements, upwards, m.
     pub heights: Vec<f64>,
     /// Degree of the elements.
@@ -129,6 +131,9 @@ fn mesh_body(problem: &Problem, plan: &Plan, index: usize) -> MeshBody {
             top -= through.elements * through.degree;
             MeshLayer {
                 shares: region.shares(),
+                inlay: layer
+                    .inlay
+                    .map(|inlay| Region::sample(plan, inlay.cover).and(&region)),
                 region,
                 heights: vec![layer.thickness / through.elements as f64; through.elements],
                 degree: through.degree,

@@ -7,7 +7,7 @@ use crate::{
     numerics::multigrid::{Coarsening, Effort, Factor, Multigrid, Stalled, conjugate_gradients},
     numerics::{banded::NotPositiveDefinite, columns::Solid},
     pressure::elastic::{
-        Failure, Field, Head, Health, Mesh, Problem, Stage,
+        Body, Failure, Field, Head, Health, Mesh, Problem, Stage,
         field::State,
         system::{Pairing, System, stuck},
     },
@@ -106,7 +106,7 @@ fn coarsening(problem: &Problem) -> Coarsening {
     let thinnest = problem
         .bodies
         .iter()
-        .map(|body| body.layers[body.main].thickness)
+        .map(Body::bending_thickness)
         .fold(f64::INFINITY, f64::min);
     Coarsening {
         widest: 4.0 * thinnest,

@@ -51,6 +51,19 @@ pub struct Layer<'a> {
     pub poisson: f64,
     /// Polynomials through it; none leaves it to the fineness.
     pub through: Option<Through>,
+    /// What another material fills of it: inserts in a core.
+    pub inlay: Option<Inlay<'a>>,
+}
+
+/// A part of a layer that is of another material, bonded to the rest.
+#[derive(Clone, Copy)]
+pub struct Inlay<'a> {
+    /// Where it is, as far as the layer is there.
+    pub cover: &'a Cover<'a>,
+    /// Young's modulus, Pa.
+    pub youngs_modulus: f64,
+    /// Poisson's ratio, −1 to 0.5, 1.
+    pub poisson: f64,
 }
 
 /// Polynomials through a layer.
@@ -215,6 +228,13 @@ impl Problem<'_> {
 }
 
 impl Body<'_> {
+    /// Thickness that bends as one: that of the plate, with core and sheets where inserts bind them, m.
+    pub(super) fn bending_thickness(&self) -> f64 {
+        let bound = self.layers.iter().filter(|layer| layer.inlay.is_some());
+        let bound: f64 = bound.map(|layer| layer.thickness).sum();
+        bound.max(self.layers[self.main].thickness)
+    }
+
     /// Thickness of all layers, m.
     pub(super) fn thickness(&self) -> f64 {
         self.layers.iter().map(|layer| layer.thickness).sum()

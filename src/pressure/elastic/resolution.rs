@@ -177,7 +177,9 @@ pub(super) fn size(problem: &Problem, plan: &Plan) -> Size {
     // The coarsest factor, the program itself and what the allocator keeps.
     const FIXED: f64 = 40e6;
     let bodies = 0..problem.bodies.len();
-    let layers: usize = problem.bodies.iter().map(|body| body.layers.len()).sum();
+    let stored = |layer: &Layer| 1 + usize::from(layer.inlay.is_some());
+    let every = problem.bodies.iter().flat_map(|body| &body.layers);
+    let layers: usize = every.map(stored).sum();
     let groups: Vec<usize> = bodies.map(|body| 3 * nodes(problem, body)).collect();
     let block = groups.iter().sum::<usize>() + loose(problem);
     let squares: usize = groups.iter().map(|n| n * n.next_multiple_of(4)).sum();

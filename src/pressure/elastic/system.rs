@@ -78,15 +78,26 @@ impl System {
         groups.resize(groups.len() + resolution::loose(problem), 1);
         let mut operator = Operator::new(&mesh.plan, &groups);
         for (group, (body, own)) in problem.bodies.iter().zip(&mesh.bodies).enumerate() {
+            let rests = group + 1 == mesh.bodies.len();
             for (material, layer) in body.layers.iter().zip(&own.layers) {
-                operator.add_layer(&Layer {
-                    shares: &layer.shares,
-                    group,
-                    first_node: layer.first_node,
-                    heights: &layer.heights,
-                    degree: layer.degree,
-                    constants: solid(material, &mesh.plan, group + 1 == mesh.bodies.len()),
-                });
+                let mut add = |shares: &[f64], moduli: [f64; 2]| {
+                    operator.add_layer(&Layer {
+                        shares,
+                        group,
+                        first_node: layer.first_node,
+                        heights: &layer.heights,
+                        degree: layer.degree,
+                        constants: solid((moduli, material.thickness), &mesh.plan, rests),
+                    });
+                };
+                let own = [material.youngs_modulus, material.poisson];
+                match material.inlay.zip(layer.inlay.as_ref()) {
+                    Some((inlay, filled)) => {
+                        add(&layer.region.without(filled).shares(), own);
+                        add(&filled.shares(), [inlay.youngs_modulus, inlay.poisson]);
+                    }
+                    None => add(&layer.shares, own),
+                }
             }
         }
         let mut system = Self {
@@ -368,15 +379,14 @@ fn spacings(plan: &Plan) -> Vec<f64> {
         .collect()
 }
 
-fn solid(material: &Material, plan: &Plan, rests: bool) -> Solid {
-    let (modulus, ratio) = (material.youngs_modulus, material.poisson);
+fn solid(([modulus, ratio], thickness): ([f64; 2], f64), plan: &Plan, rests: bool) -> Solid {
     let span = |lines: &[f64]| lines[lines.len() - 1] - lines[0];
     let size = span(&plan.x).powi(2) + span(&plan.y).powi(2);
     let through = if rests { GROUND } else { GROUND_ABOVE };
     Solid {
         first: modulus * ratio / ((1.0 + ratio) * (1.0 - 2.0 * ratio)),
         shear: 0.5 * modulus / (1.0 + ratio),
-        ground: [GROUND, through].map(|part| part * modulus / (size * material.thickness)),
+        ground: [GROUND, through].map(|part| part * modulus / (size * thickness)),
     }
 }
 

@@ -231,11 +231,8 @@ fn check(
     terminals: &Terminals,
     conductivity: &[Conductivity],
 ) -> Result<(), Failure> {
-    let conducts = |k: f64| k.is_finite() && k > 0.0;
-    let sound = conductivity.len() == stack.bodies.len()
-        && conductivity
-            .iter()
-            .all(|k| conducts(k.through) && k.along.iter().all(|k| conducts(*k)));
+    let sound =
+        conductivity.len() == stack.bodies.len() && conductivity.iter().all(|k| k.is_sound());
     if !sound {
         return Err(Failure::Misfit {
             what: "every body needs conductivities above zero",

@@ -74,16 +74,19 @@ impl Equations {
     ) -> Result<Self, Failure> {
         let (groups, places) = arranged(stack, arrangement);
         let mut operator = Operator::<Scalar>::new(&stack.plan, &groups);
-        for ((body, place), conductivity) in stack.bodies.iter().zip(&places).zip(conductivity) {
-            for (layer, first) in body.layers.iter().zip(body.first_nodes()) {
-                operator.add_layer(&Layer {
-                    shares: &layer.shares,
-                    group: place[0],
-                    first_node: place[1] + first,
-                    heights: &layer.heights,
-                    degree: layer.degree,
-                    constants: conductivity.scalar(),
-                });
+        for (index, body) in stack.bodies.iter().enumerate() {
+            let [group, foot] = places[index];
+            for (own, (layer, first)) in body.layers.iter().zip(body.first_nodes()).enumerate() {
+                for (shares, conductivity) in stack.made((index, own), conductivity[index]) {
+                    operator.add_layer(&Layer {
+                        shares: &shares,
+                        group,
+                        first_node: foot + first,
+                        heights: &layer.heights,
+                        degree: layer.degree,
+                        constants: conductivity.scalar(),
+                    });
+                }
             }
         }
         let threads = threads(stack, conductivity);

@@ -114,15 +114,23 @@ impl Reader<'_> {
             let (Some(entry), Some(exit)) = (entry, exit) else {
                 continue;
             };
-            for (layer, first) in body.layers.iter().zip(body.first_nodes()) {
+            for (own, (layer, first)) in body.layers.iter().zip(body.first_nodes()).enumerate() {
                 let top = first + layer.heights.len() * layer.degree;
                 if exit <= first && top <= entry {
-                    let shares = layer.shares.iter().enumerate();
-                    let area: f64 = shares
-                        .map(|(cell, share)| share * self.stack.plan.cell_area(cell))
+                    let conducts: f64 = self
+                        .stack
+                        .made((index, own), *conductivity)
+                        .iter()
+                        .map(|(shares, conductivity)| {
+                            let shares = shares.iter().enumerate();
+                            let area: f64 = shares
+                                .map(|(cell, share)| share * self.stack.plan.cell_area(cell))
+                                .sum();
+                            conductivity.through * area
+                        })
                         .sum();
                     let height: f64 = layer.heights.iter().sum();
-                    sum += height / (conductivity.through * area);
+                    sum += height / conducts;
                 }
             }
         }

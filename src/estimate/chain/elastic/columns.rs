@@ -5,6 +5,8 @@ mod edges;
 mod heat;
 mod problem;
 mod readings;
+mod sandwich;
+mod storeys;
 mod temperatures;
 mod terminals;
 

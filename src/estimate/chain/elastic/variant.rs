@@ -14,7 +14,7 @@ pub(super) enum Variant {
     OtherFriction,
     /// Asperities that yield for hard contact and the other way round.
     OtherCompliance,
-    /// Flat although the file states a bow, a map or a sag.
+    /// Flat although the file states a bow, a map or a sag; proud inserts stay proud.
     Flat,
     /// Stated flatness, −1 convex to 1 concave.
     Bent(f64),
@@ -45,9 +45,11 @@ impl Variant {
         }
     }
 
-    /// Initial gap of the faces of an interface (0 is the warmest) at a point, m.
+    /// Initial gap of the faces of an interface (0 is the warmest) at a point, m; what proud inserts
+    /// leave open is no matter of flatness and in every variant.
     pub(super) fn initial_gap(self, (joint, interface): (&Joint, usize), point: [f64; 2]) -> f64 {
-        match self {
+        let proud = joint.proud_gap(interface, point);
+        let faces = match self {
             Self::Flat => 0.0,
             Self::Bent(place) => {
                 let faces = [Facing::Cold, Facing::Warm].into_iter();
@@ -57,15 +59,17 @@ impl Variant {
                 joint.initial_gap(interface, point) + bent.sum::<f64>()
             }
             _ => joint.initial_gap(interface, point),
-        }
+        };
+        faces + proud
     }
 
-    /// Whether the faces come together flat.
+    /// Whether the faces come together without any gap: flat, and no insert stands out.
     pub(super) fn is_flat(self, joint: &Joint) -> bool {
-        match self {
+        let faces = match self {
             Self::Flat => true,
             Self::Bent(place) => joint.is_flat() && place == 0.0,
             _ => joint.is_flat(),
-        }
+        };
+        faces && joint.is_flush()
     }
 }

@@ -6,7 +6,7 @@ use crate::{
     estimate::chain::{
         conditions::Conditions,
         elastic::{
-            columns::{problem::Order, readings::mean_pressure, terminals::Ends},
+            columns::{problem::Order, readings::mean_pressure, sandwich, terminals::Ends},
             solver::Factors,
         },
     },
@@ -65,6 +65,12 @@ impl Plates {
         let mut stack = Stack::new(mesh.plan.clone(), bodies)?;
         for (interface, parts) in faces.into_iter().enumerate() {
             stack = stack.meeting(interface, parts)?;
+        }
+        for index in 0..joint.plates.len() {
+            let of_mesh = &mesh.bodies[order.plate(index, joint.plates.len())];
+            for (layer, parts) in sandwich::parts((joint, index), of_mesh) {
+                stack = stack.made_of((index, layer), parts)?;
+            }
         }
         Ok(Self {
             stack: Arc::new(stack),

@@ -3,12 +3,18 @@
 use crate::{
     estimate::{
         Failure, Watch,
-        chain::elastic::{columns::terminals::heat_zones, variant::Variant},
+        chain::elastic::{
+            columns::{
+                storeys::{Storey, body, storeys},
+                terminals::heat_zones,
+            },
+            variant::Variant,
+        },
     },
-    joint::{self, Engagement, FaceFriction, Fastener, HeadModel, Joint, Plate, Zone},
+    joint::{self, Engagement, FaceFriction, Fastener, HeadModel, Joint, Zone},
     pressure::elastic::{
-        self, Annulus, Body, Bolt, Cover, End, Faces, Fineness, Head, Height, Interface, Layer,
-        Problem, Progress, Stage,
+        self, Annulus, Bolt, End, Faces, Fineness, Head, Height, Interface, Problem, Progress,
+        Stage,
     },
 };
 
@@ -75,18 +81,18 @@ pub(super) fn with_problem<T>(
     task: &Task,
     work: impl FnOnce(&Problem) -> T,
 ) -> T {
-    let plates: Vec<&Plate> = (0..joint.plates.len())
-        .map(|body| &joint.plates[order.plate(body, joint.plates.len())])
+    let plates: Vec<usize> = (0..joint.plates.len())
+        .map(|body| order.plate(body, joint.plates.len()))
         .collect();
     let covers: Vec<Vec<Storey>> = plates
         .iter()
         .enumerate()
-        .map(|(body, plate)| storeys(plate, body == 0))
+        .map(|(body, plate)| storeys((joint, *plate), body == 0))
         .collect();
     let bodies = plates
         .iter()
         .zip(&covers)
-        .map(|(plate, storeys)| body(plate, storeys))
+        .map(|(plate, storeys)| body(&joint.plates[*plate], storeys))
         .collect();
     let count = joint.interfaces();
     let gaps: Vec<Box<Height>> = (0..count)
@@ -123,80 +129,6 @@ pub(super) fn with_problem<T>(
         progress: Some(&tell),
     };
     work(&problem)
-}
-
-/// A layer before it is borrowed: where it is, how thick.
-struct Storey<'a> {
-    cover: Box<Cover<'a>>,
-    thickness: f64,
-    main: bool,
-}
-
-/// Layers of a plate, upper first; ribs stand on the outer face, feet on the faying face.
-fn storeys(plate: &Plate, upper: bool) -> Vec<Storey<'_>> {
-    let mut found = ribs(plate);
-    found.reverse();
-    found.push(Storey {
-        cover: Box::new(move |point| plate.covers(point)),
-        thickness: plate.thickness,
-        main: true,
-    });
-    if let Some(feet) = &plate.feet {
-        found.push(Storey {
-            cover: Box::new(move |point| plate.stands_at(point)),
-            thickness: feet.height,
-            main: false,
-        });
-    }
-    if !upper {
-        found.reverse();
-    }
-    found
-}
-
-/// Ribs as layers, from the outer face outwards: each as thick as the step to the next height.
-fn ribs(plate: &Plate) -> Vec<Storey<'_>> {
-    let mut heights: Vec<f64> = plate.ribs.iter().map(|rib| rib.height).collect();
-    heights.sort_by(f64::total_cmp);
-    heights.dedup();
-    let mut below = 0.0;
-    heights
-        .into_iter()
-        .map(|height| {
-            let thickness = height - below;
-            below = height;
-            Storey {
-                cover: Box::new(move |point| {
-                    plate.covers(point)
-                        && plate
-                            .ribs
-                            .iter()
-                            .any(|rib| rib.height >= height && rib.patch.contains(plate.own(point)))
-                }),
-                thickness,
-                main: false,
-            }
-        })
-        .collect()
-}
-
-fn body<'a>(plate: &Plate, storeys: &'a [Storey<'a>]) -> Body<'a> {
-    let [left, lower, right, upper] = plate.bounds();
-    let material = &plate.material;
-    Body {
-        layers: storeys
-            .iter()
-            .map(|storey| Layer {
-                cover: storey.cover.as_ref(),
-                thickness: storey.thickness,
-                youngs_modulus: material.youngs_modulus.value,
-                poisson: material.poisson.value,
-                through: None,
-            })
-            .collect(),
-        main: storeys.iter().position(|storey| storey.main).unwrap_or(0),
-        bounds: [[left, right], [lower, upper]],
-    }
 }
 
 /// What yields between the faces besides the plates.

@@ -57,13 +57,15 @@ impl Shape {
                 to_the_hole && hole < seat.outer_radius && seat.outer_radius <= *radius
             });
         let plain = |plate: &Plate| {
-            plate.ribs.is_empty() && plate.cutouts.is_empty() && plate.feet.is_none()
+            let bare = plate.ribs.is_empty() && plate.cutouts.is_empty() && plate.feet.is_none();
+            bare && plate.sandwich.is_none()
         };
         let round = near(*radius, *other)
             && near(hole, far_hole)
             && centred(first.origin)
             && centred(second.origin);
         let bare = joint.is_flat()
+            && joint.is_flush()
             && joint.contact.compliance == Compliance::Hard
             && joint.filler(0).and_then(Filler::stiffness).is_none()
             && joint.loose_flatness(0) <= 0.0;
