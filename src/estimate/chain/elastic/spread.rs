@@ -6,7 +6,7 @@ use crate::{
     estimate::{
         Chain, Failure,
         chain::{
-            conditions::Conditions,
+            conditions::{Conditions, Faces},
             elastic::{
                 ElasticModel,
                 level::GROUND,
@@ -108,7 +108,7 @@ impl ElasticModel {
             // The gaps of the least force, and no pressure where the faces lie on each other: a
             // filler and gas conduct there all the same.
             let loose = Conditions {
-                faces: nominal.faces.unpressed(),
+                faces: nominal.faces.iter().map(Faces::unpressed).collect(),
                 ..nominal.clone()
             };
             let [least, ..] = response::ends(range);
