@@ -47,7 +47,6 @@ impl Plates {
             compliance: Compliance::Hard,
             thread: None,
             through: None,
-            inlay: None,
             fineness: Fineness::Fast,
             most_bytes: 1_000_000_000,
         }
@@ -82,6 +81,7 @@ impl Plates {
                 youngs_modulus: self.youngs_modulus[index],
                 poisson: self.poisson,
                 through: self.through,
+                inlay: None,
             }],
             main: 0,
             bounds: self.bounds[index],
