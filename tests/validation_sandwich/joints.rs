@@ -52,7 +52,8 @@ const ISOTHERMAL: &str = "heated = { face = \"isothermal\" }";
 fn a_panel_conducts_the_same_upside_down() {
     let last = file([base(ISOTHERMAL), panel(CORE, "")], "20 µm");
     let first = file([panel(CORE, ISOTHERMAL), base("")], "20 µm");
-    let [last, first] = [last, first].map(|text| case(&text).source_to_sink.resistance.nominal);
+    let [last, first] =
+        [last, first].map(|text| case(&text).results.source_to_sink.resistance.nominal);
     assert!((first / last - 1.0).abs() < 1e-6, "{first} {last}");
 }
 
@@ -63,7 +64,7 @@ fn inserts_that_stand_out_more_never_conduct_better() {
         .into_iter()
         .map(|proud| {
             let text = file([base(ISOTHERMAL), panel(CORE, "")], proud);
-            case(&text).source_to_sink.resistance.nominal
+            case(&text).results.source_to_sink.resistance.nominal
         })
         .collect();
     assert!(found[0] < found[1] && found[1] < found[2], "{found:?}");

@@ -117,7 +117,7 @@ fn on_flange([x, y]: [f64; 2]) -> bool {
     (x - AT[0]).hypot(y - AT[1]) <= FLANGE
 }
 
-fn layer(cover: &Cover<'static>, thickness: f64, modulus: f64) -> Layer<'_> {
+fn layer<'a>(cover: &'a Cover<'a>, thickness: f64, modulus: f64) -> Layer<'a> {
     Layer {
         cover,
         thickness,
@@ -149,16 +149,15 @@ fn sandwich<'a>([sheet, core]: [f64; 2], modulus: f64) -> Vec<Layer<'a>> {
 }
 
 fn solved(panel: Vec<Layer>, (force, gap): (f64, &Height)) -> Field {
-    let body = |layers: Vec<Layer<'_>>| -> _ { layers };
     let bounds = [[0.0, SIDE]; 2];
     let bodies = vec![
         Body {
-            layers: body(vec![layer(&square, 4e-3, 70e9)]),
+            layers: vec![layer(&square, 4e-3, 70e9)],
             main: 0,
             bounds,
         },
         Body {
-            layers: body(panel),
+            layers: panel,
             main: 0,
             bounds,
         },
