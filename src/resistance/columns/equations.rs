@@ -19,6 +19,9 @@ const SOLVER: &str = "heat through the columns, by conjugate gradients,";
 /// Stiffness of a held face over that of its body through the thickness; the mean of what is left
 /// is taken off, so that only the spread within the face matters: a millionth of the body's own.
 const HELD: f64 = 1e6;
+/// The same in a stack with parts of other conductivities: a core passes so little heat that a stiffer
+/// face would leave too few digits of it.
+const HELD_LIGHTLY: f64 = 1e4;
 /// Residual asked for, over the load.
 pub(super) const TOLERANCE: f64 = 1e-8;
 /// Heat that may be lost between source and sink before the residual is made smaller.
@@ -94,12 +97,13 @@ impl Equations {
             Arrangement::Merged => Vec::new(),
             Arrangement::Apart => add_faces(stack, &places, &threads, &mut operator),
         };
+        let held = if stack.is_plain() { HELD } else { HELD_LIGHTLY };
         let factor = |body: usize, grip: Grip| {
             let [x, y] = conductivity[body].along;
             match grip {
                 Grip::None => 0.0,
                 Grip::Film(coefficient) => coefficient,
-                Grip::Held => HELD * conductivity[body].through / stack.bodies[body].thickness(),
+                Grip::Held => held * conductivity[body].through / stack.bodies[body].thickness(),
                 Grip::Cut(thin) | Grip::Side(thin) => thin * (x * y).sqrt(),
             }
         };

@@ -284,6 +284,11 @@ impl Stack {
         Ok(self)
     }
 
+    /// Whether every layer conducts as its body does.
+    pub(super) fn is_plain(&self) -> bool {
+        self.parts.is_empty()
+    }
+
     /// What a layer is made of: shares of the cells with their conductivity, given that of its body.
     pub(super) fn made(
         &self,
