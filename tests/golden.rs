@@ -53,8 +53,8 @@ fn demo_joints_print_what_they_printed() {
     }
     assert_eq!(
         (seen, beyond_cone),
-        (10, 3),
-        "ten demo joints for the cone, three beyond it"
+        (10, 4),
+        "ten demo joints for the cone, four beyond it"
     );
     assert!(changed.is_empty(), "changed: {changed:#?}");
 }
