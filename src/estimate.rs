@@ -135,7 +135,7 @@ pub enum Failure {
     },
     /// Bolts thread into both plates from opposite sides.
     #[error(
-        "bolts thread into both plates from opposite sides; the elastic field takes threads in one of them"
+        "bolts thread into both plates from opposite sides; the elastic field takes threads in one of them, `--field cone` in both"
     )]
     ThreadsInBothPlates,
     /// The heat through the solved plates has no number.

@@ -486,8 +486,8 @@ fn json(assert: &OutputAssert) -> serde_json::Value {
     serde_json::from_str(&stdout(assert)).expect("the test set this up")
 }
 
-/// Few draws: these tests look at the plumbing, not at the digits.
-const FEW: [&str; 2] = ["--draws", "32"];
+/// Few draws on the closed form: these tests look at the plumbing, not at the digits.
+const FEW: [&str; 4] = ["--draws", "32", "--field", "cone"];
 
 #[test]
 fn the_starter_joint_is_accepted_as_it_stands() {
@@ -563,6 +563,7 @@ fn one_seed_gives_one_output_and_no_draws_give_no_band() {
     let folder = starter();
     let told = |arguments: &[&str]| {
         let command = within(&folder).args(["estimate", "joint.toml", "--json"]);
+        let command = command.args(["--field", "cone"]);
         stdout(&command.args(arguments).assert().code(0))
     };
     let first = told(&["--draws", "32", "--seed", "3"]);
@@ -593,9 +594,8 @@ fn cautions_end_with_three_only_when_strict() {
 fn an_override_changes_the_joint_and_a_wrong_one_is_pointed_at() {
     let folder = starter();
     let told = |set: &str| {
-        let command =
-            within(&folder).args(["estimate", "joint.toml", "--draws", "0", "--set", set]);
-        command.assert()
+        let command = within(&folder).args(["estimate", "joint.toml", "--draws", "0"]);
+        command.args(["--field", "cone", "--set", set]).assert()
     };
     let before = stdout(&told("title=\"Box on panel\"").code(0));
     let after = stdout(&told("plate.box.thickness=\"9 mm\"").code(0));
@@ -702,6 +702,7 @@ fn a_joint_that_opens_is_a_failure() {
     let folder = starter();
     let open = within(&folder)
         .args(["estimate", "joint.toml", "--draws", "0"])
+        .args(["--field", "cone"])
         .args(["--set", "fastener.torque.value=\"0.01 N·m\""])
         .args([
             "--set",
@@ -722,7 +723,8 @@ fn a_torque_curve_is_told_and_drawn_without_leaving_anything_behind() {
     let folder = starter();
     let sweep = |out: &[&str]| {
         let command = within(&folder).args(["torque", "joint.toml", "--steps", "3"]);
-        command.args(["--draws", "20"]).args(out).assert()
+        let command = command.args(["--draws", "20", "--field", "cone"]);
+        command.args(out).assert()
     };
     let told = sweep(&["--out", "curve.svg"]).code(0);
     assert!(stdout(&told).contains("N·m"));
@@ -749,7 +751,7 @@ fn the_figures_of_a_joint_go_into_a_folder_of_their_own() {
     let folder = starter();
     let draw = |more: &[&str]| {
         let command = within(&folder).args(["draw", "joint.toml", "--out", "made/figures"]);
-        command.args(more).assert()
+        command.args(["--field", "cone"]).args(more).assert()
     };
     draw(&["--format", "both"]).code(0).stdout_eq("");
     let made = folder.path().join("made/figures");
@@ -847,6 +849,7 @@ fn a_report_is_coloured_on_request_and_says_the_same() {
     let folder = starter();
     let told = |choice: &str| {
         let command = within(&folder).args(["estimate", "joint.toml", "--draws", "0"]);
+        let command = command.args(["--field", "cone"]);
         stdout(&command.args(["--color", choice]).assert().code(0))
     };
     let (plain, coloured) = (told("never"), told("always"));
@@ -876,7 +879,7 @@ fn a_sweep_that_the_joint_cannot_take_is_a_usage_error() {
         .assert()
         .code(0);
     let told = within(&folder)
-        .args(["torque", "joint.toml", "--draws", "0"])
+        .args(["torque", "joint.toml", "--draws", "0", "--field", "cone"])
         .assert()
         .code(2)
         .stdout_eq("");

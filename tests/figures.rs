@@ -147,6 +147,8 @@ fn sweep() -> TorqueSweep {
         title: "Converter box".into(),
         group: "M4 socket, 6 places".into(),
         case: "service",
+        field: "elastic",
+        resolution: "normal",
         stated: 2.2,
         largest: Some((2.9, "yield of the bolt")),
         best: Some(2.8),

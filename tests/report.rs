@@ -653,6 +653,8 @@ fn torque_sweep() -> TorqueSweep {
         title: "Converter box".to_owned(),
         group: "M4 socket, 6 places".to_owned(),
         case: "service",
+        field: "elastic",
+        resolution: "normal",
         stated: 1.7,
         largest: Some((2.04, "yield of the bolt")),
         best: Some(1.0),
@@ -673,6 +675,7 @@ fn a_torque_sweep_marks_the_stated_the_best_and_what_strength_forbids() {
             .expect("a row of that torque")
             .to_owned()
     };
+    assert!(report.contains("\nfield elastic, normal\n"), "{report}");
     assert!(line("1.000").ends_with("best"), "{report}");
     assert!(line("1.600").ends_with("stated"), "{report}");
     assert!(line("2.200").ends_with("over"), "{report}");
@@ -732,7 +735,16 @@ fn a_torque_sweep_in_json_keeps_its_keys() {
     has(
         &object,
         &[
-            "title", "group", "stated", "largest", "best", "required", "points", "cautions",
+            "title",
+            "group",
+            "field",
+            "resolution",
+            "stated",
+            "largest",
+            "best",
+            "required",
+            "points",
+            "cautions",
         ],
     );
     assert_eq!(

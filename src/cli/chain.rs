@@ -141,13 +141,13 @@ impl From<Failure> for Trouble {
             Failure::BeyondCone(_) => Self::Usage {
                 message: failure.to_string(),
                 help: Some(format!(
-                    "estimate it with `--field elastic`; `ringsum explain {BEYOND_CONE}` tells more"
+                    "leave out `--field cone`: the solved field carries it; `ringsum explain {BEYOND_CONE}` tells more"
                 )),
             },
             Failure::Contact(Contact::TooLarge { bytes, .. }) => Self::Usage {
                 message: failure.to_string(),
                 help: Some(format!(
-                    "allow more with `--memory \"{} MB\"`, or take `--resolution fast`",
+                    "allow more with `--memory \"{} MB\"`, or take `--resolution fast` or `--field cone`",
                     bytes.div_ceil(1_000_000)
                 )),
             },

@@ -20,8 +20,10 @@ use std::{
 /// Cells across a map: finer than print shows.
 const COLUMNS: usize = 400;
 
-/// Draw pressure, local conductance and its growth around the bolts; with --field elastic also gap,
-/// temperatures of both faces, heat flux between them and a section through the stack
+/// Draw maps of pressure and gap, conductance, temperature and heat flux, and a section
+///
+/// A last figure tells the conductance within a radius of each bolt. With --field cone it draws
+/// pressure and conductance alone.
 #[derive(Debug, Args)]
 pub struct Draw {
     /// Joint file; - reads standard input

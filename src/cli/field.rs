@@ -10,12 +10,12 @@ use std::io::{self, IsTerminal, Write};
 /// How the pressure between the faces is found.
 #[derive(Clone, Copy, Debug, Args)]
 pub struct Field {
-    /// Pressure field: cone (closed form) or elastic (solved, with gap, bow and edges)
+    /// Pressure field: elastic (solved, with gap, bow, edges) or cone (closed form, a quick look)
     #[arg(
         long = "field",
         value_enum,
         value_name = "FIELD",
-        default_value = "cone",
+        default_value = "elastic",
         hide_possible_values = true
     )]
     kind: Kind,
@@ -32,10 +32,10 @@ const MEMORY: u64 = 1_000_000_000;
 
 #[derive(Clone, Copy, Debug, PartialEq, Eq, ValueEnum)]
 enum Kind {
-    /// Closed form
-    Cone,
     /// Solved
     Elastic,
+    /// Closed form
+    Cone,
 }
 
 #[derive(Clone, Copy, Debug, PartialEq, Eq, ValueEnum)]
@@ -55,7 +55,7 @@ impl Field {
             Kind::Cone if self.resolution.is_some() || self.memory.is_some() => {
                 Err(Trouble::usage(
                     "--resolution and --memory speak of the elastic field",
-                    "add --field elastic, or leave them out",
+                    "leave out --field cone, or leave them out",
                 ))
             }
             Kind::Cone => Ok(Choice::Cone),

@@ -449,6 +449,10 @@ pub struct TorqueSweep {
     pub group: String,
     /// The case that stands worst: `service`, `hot` or `cold`.
     pub case: &'static str,
+    /// The field: `cone` or `elastic`.
+    pub field: &'static str,
+    /// The resolution: `fast`, `normal` or `fine`.
+    pub resolution: &'static str,
     /// Torque stated in the file, N m.
     pub stated: f64,
     /// Largest torque that passes every limit, N m, and the limit that ends it.

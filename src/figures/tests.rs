@@ -139,6 +139,8 @@ fn sweep(stated: f64, largest: f64, required: f64, size: f64) -> TorqueSweep {
         title: "Converter box on a panel".into(),
         group: "M4 socket, 6 places".into(),
         case: "service",
+        field: "elastic",
+        resolution: "normal",
         stated,
         largest: Some((largest, "pressure under the head")),
         best: Some(3.0),

@@ -292,6 +292,8 @@ pub fn torque(sweep: &TorqueSweep) -> Value {
         "title": sweep.title,
         "group": sweep.group,
         "case": sweep.case,
+        "field": sweep.field,
+        "resolution": sweep.resolution,
         "stated": sweep.stated,
         "largest": sweep.largest.map(|(torque, limit)| json!({ "torque": torque, "limit": limit })),
         "best": sweep.best,

@@ -98,9 +98,12 @@ pub fn torque(sweep: &TorqueSweep) -> String {
     let _ = writeln!(
         text,
         "torque of {}; the other fasteners as stated; {} case\n\
+         field {}, {}\n\
          sink: source to sink; added: by the joint; contact: the faces alone, without spreading\n\n{table}",
         plain(&sweep.group),
-        sweep.case
+        sweep.case,
+        sweep.field,
+        sweep.resolution,
     );
     let _ = writeln!(
         text,

@@ -93,6 +93,8 @@ pub fn sweep_along(chain: &Chain, options: &SweepOptions) -> Result<TorqueSweep,
         points,
         required,
         case: joint.service.cases[case].name,
+        field: chain.field_name(),
+        resolution: chain.resolution_name(),
         cautions,
     };
     // In gas the gap grows with the force, which this field does not know: no torque is the best.

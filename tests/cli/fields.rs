@@ -46,7 +46,7 @@ fn bench() -> tempfile::TempDir {
 #[test]
 fn an_unknown_field_or_resolution_is_a_usage_error_that_names_the_known_ones() {
     for (arguments, known) in [
-        (["--field", "magic"], "cone, elastic"),
+        (["--field", "magic"], "elastic, cone"),
         (["--resolution", "finest"], "fast, normal, fine"),
         (["--memory", "3"], "--memory \"2 GB\""),
     ] {
@@ -63,16 +63,79 @@ fn an_unknown_field_or_resolution_is_a_usage_error_that_names_the_known_ones() {
 }
 
 #[test]
+fn every_command_stands_on_the_solved_field_unless_told_otherwise() {
+    let folder = bench();
+    let run = |arguments: &[&str]| {
+        let command = within(&folder).args(arguments);
+        stdout(&command.args(["--draws", "0"]).assert().code(0))
+    };
+    for (arguments, told) in [
+        (
+            ["estimate", "two.toml"].as_slice(),
+            "\nfield elastic, normal; ",
+        ),
+        (
+            &["estimate", "two.toml", "--field", "cone"],
+            "\nfield cone, ",
+        ),
+        (
+            &["torque", "two.toml", "--steps", "2"],
+            "\nfield elastic, normal\n",
+        ),
+    ] {
+        let found = run(arguments);
+        assert!(found.contains(told), "{arguments:?}: {found}");
+    }
+    for command in [
+        ["estimate", "two.toml"].as_slice(),
+        &["torque", "two.toml", "--steps", "2"],
+    ] {
+        let object = run(&[command, &["--json"]].concat());
+        let object: serde_json::Value = serde_json::from_str(&object).expect("one object");
+        let named = (&object["field"], &object["resolution"]);
+        assert_eq!(named, (&"elastic".into(), &"normal".into()));
+    }
+}
+
+#[test]
+fn threads_in_both_plates_are_led_to_the_cone() {
+    let folder = bench();
+    let bolt = JOINT
+        .split("[fastener]")
+        .nth(1)
+        .expect("the joint has bolts")
+        .replace("kind = \"nut\"", "kind = \"tapped\"");
+    let plates = JOINT
+        .split("[fastener]")
+        .next()
+        .expect("the joint has plates");
+    let (left, right) = (
+        bolt.replace(", [\"40 mm\", \"12 mm\"]", ""),
+        bolt.replace("[\"10 mm\", \"12 mm\"], ", ""),
+    );
+    let both = format!("{plates}[[fastener]]{left}[[fastener]]{right}from = \"lower\"\n");
+    fs::write(folder.path().join("both.toml"), both).expect("the joint can be written");
+    let run = |more: &[&str]| {
+        let command = within(&folder).args(["estimate", "both.toml", "--draws", "0"]);
+        command.args(more).assert()
+    };
+    let told = stderr(&run(&[]).code(1).stdout_eq(""));
+    assert!(told.contains("`--field cone`"), "{told}");
+    run(&["--field", "cone"]).code(0);
+}
+
+#[test]
 fn options_of_the_elastic_field_are_refused_beside_the_cone() {
     let folder = bench();
     let told = stderr(
         &within(&folder)
-            .args(["estimate", "two.toml", "--resolution", "fast"])
+            .args(["estimate", "two.toml", "--field", "cone"])
+            .args(["--resolution", "fast"])
             .assert()
             .code(2)
             .stdout_eq(""),
     );
-    assert!(told.contains("add --field elastic"), "{told}");
+    assert!(told.contains("leave out --field cone"), "{told}");
 }
 
 #[test]
@@ -80,14 +143,7 @@ fn the_solved_field_tells_its_gap_and_the_cone_beside() {
     let folder = bench();
     let run = |more: &[&str]| {
         within(&folder)
-            .args([
-                "estimate",
-                "two.toml",
-                "--field",
-                "elastic",
-                "--resolution",
-                "fast",
-            ])
+            .args(["estimate", "two.toml", "--resolution", "fast"])
             .args(["--draws", "20"])
             .args(more)
             .assert()
@@ -139,9 +195,7 @@ fn a_grid_beyond_the_memory_is_refused_with_the_way_out() {
     let folder = bench();
     let told = stderr(
         &within(&folder)
-            .args([
-                "estimate", "two.toml", "--field", "elastic", "--memory", "1 MB",
-            ])
+            .args(["estimate", "two.toml", "--memory", "1 MB"])
             .assert()
             .code(2)
             .stdout_eq(""),
@@ -156,14 +210,7 @@ fn a_solved_field_is_drawn_with_its_gap() {
     let folder = bench();
     let draw = || {
         within(&folder)
-            .args([
-                "draw",
-                "two.toml",
-                "--field",
-                "elastic",
-                "--resolution",
-                "fast",
-            ])
+            .args(["draw", "two.toml", "--resolution", "fast"])
             .args(["--out", "figures"])
             .assert()
     };
@@ -189,14 +236,7 @@ fn torque_in_air_knows_that_the_gap_grows() {
     let folder = bench();
     let swept = stdout(
         &within(&folder)
-            .args([
-                "torque",
-                "two.toml",
-                "--field",
-                "elastic",
-                "--resolution",
-                "fast",
-            ])
+            .args(["torque", "two.toml", "--resolution", "fast"])
             .args([
                 "--draws", "0", "--steps", "5", "--json", "--from", "0.2 N·m", "--to", "4 N·m",
             ])
@@ -225,14 +265,7 @@ fn threads_change_no_digit_and_fillers_have_their_draws() {
         stdout(
             &within(&folder)
                 .env("RAYON_NUM_THREADS", threads)
-                .args([
-                    "estimate",
-                    "two.toml",
-                    "--field",
-                    "elastic",
-                    "--resolution",
-                    "fast",
-                ])
+                .args(["estimate", "two.toml", "--resolution", "fast"])
                 .args(["--draws", "20", "--json", "--set", set])
                 .assert()
                 .code(0),
@@ -280,7 +313,7 @@ at = ["0 mm", "0 mm"]
 
 fn draw(folder: &tempfile::TempDir, file: &str) -> std::path::PathBuf {
     within(folder)
-        .args(["draw", file, "--field", "elastic", "--resolution", "fast"])
+        .args(["draw", file, "--resolution", "fast"])
         .args(["--out", "figures"])
         .assert()
         .code(0);
@@ -325,14 +358,7 @@ fn rings_of_solved_fields_add_up_to_the_contact_and_say_that_it_is_not_the_joint
         let run = |more: &str| {
             stdout(
                 &within(&folder)
-                    .args([
-                        "estimate",
-                        file,
-                        "--field",
-                        "elastic",
-                        "--resolution",
-                        "fast",
-                    ])
+                    .args(["estimate", file, "--resolution", "fast"])
                     .args(["--draws", "0", "--rings", more])
                     .assert()
                     .code(0),
@@ -361,14 +387,7 @@ fn media_are_told_side_by_side_and_an_unknown_one_is_refused() {
     let folder = bench();
     let run = |more: &[&str]| {
         within(&folder)
-            .args([
-                "estimate",
-                "two.toml",
-                "--field",
-                "elastic",
-                "--resolution",
-                "fast",
-            ])
+            .args(["estimate", "two.toml", "--resolution", "fast"])
             .args(["--draws", "0"])
             .args(more)
             .assert()
@@ -397,7 +416,7 @@ fn the_best_torque_of_a_joint_that_is_to_resist_is_that_of_most_resistance() {
     let swept = stdout(
         &within(&folder)
             .args([
-                "torque", "two.toml", "--draws", "0", "--steps", "4", "--json",
+                "torque", "two.toml", "--field", "cone", "--draws", "0", "--steps", "4", "--json",
             ])
             .args(["--set", "service.medium=vacuum"])
             .args([

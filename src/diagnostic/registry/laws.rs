@@ -114,8 +114,9 @@ pub(super) const ENTRIES: &[Entry] = &[
              to zero there. No fixed angle is right: from head edge to contact edge it is 16 to 24° \
              up to a thickness of 0.8 b, 32° at 2 b and 39° at 4 b. The 45° of old texts belongs to \
              glued plates. a is the hole radius, t_e the effective thickness of unequal plates.",
-            "A half-angle of your own or the angle of VDI 2230 can be chosen for comparison. The field \
-             solved for the whole joint is `law/elastic-contact`.",
+            "`--field cone` takes it, for a quick look; a half-angle of your own or the angle of VDI 2230 \
+             can be chosen for comparison. The field solved for the whole joint, which is taken \
+             otherwise, is `law/elastic-contact`.",
         ],
     ),
     Law {
@@ -140,7 +141,7 @@ pub(super) const ENTRIES: &[Entry] = &[
              faces the contact does not grow with the force, and pressure and gap follow it in \
              proportion. A filler of known modulus M and thickness t is a bed of springs that does \
              not pull; pastes and fluids flow away and leave bare faces.",
-            "`--field elastic` takes it; `--resolution` sets the grid. Radii that hold a share of the \
+            "It is taken unless `--field cone` is given; `--resolution` sets the grid. Radii that hold a share of the \
              force converge best, the contact area slowest. Heads that press uniformly or as rigid \
              bodies, sliding or stuck faces and hard or yielding asperities are choices of `[contact]`; the \
              other choice enters low and high.",

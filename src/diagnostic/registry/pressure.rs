@@ -14,7 +14,7 @@ pub(super) const ENTRIES: &[Entry] = &[
          uniform heads, frictionless faces and hard contact. Outlines by points, cut-outs, feet, \
          ribs, flatness maps, thermal sag and other choices of [contact] need the elastic solution of the whole \
          joint; a number from the cone would stand for another joint.",
-        "Estimate with `--field elastic`, or take the named fields out to see what the plain joint does.",
+        "Leave out `--field cone`, or take the named fields out to see what the plain joint does.",
     ),
     Range.entry(
         "pressure/cone-beyond-edge",
@@ -120,8 +120,8 @@ pub(super) const ENTRIES: &[Entry] = &[
              in proportion to the force. The cone does not know this gap: in gas it takes the faces \
              as near to each other as their roughness allows everywhere. On the reference joints in \
              air the true joint added 1.4 and 1.8 times what the closed gap gives.",
-            "Take the upper end of the band for a hot case, fill the joint, or solve the contact of \
-             the whole joint with `--field elastic`.",
+            "Take the upper end of the band for a hot case, fill the joint, or leave out \
+             `--field cone`: the contact of the whole joint is then solved with its gap.",
         ],
     ),
     Grave.entry(
@@ -131,8 +131,9 @@ pub(super) const ENTRIES: &[Entry] = &[
             "The stated out-of-flatness of both faces exceeds 0.2 mm, or half of the filler's \
              thickness (judgement). It then decides where the faces touch and how thick the gap or \
              the filler is, and the cone, which takes the faces as flat, cannot tell.",
-            "Measure and mend the faces, take a filler that is thicker than the gap, or solve the \
-             contact with the bow as initial gap (`--field elastic`). No requirement counts as met until then.",
+            "Measure and mend the faces, take a filler that is thicker than the gap, or leave out \
+             `--field cone`: the contact is then solved with the bow as initial gap. No requirement counts \
+             as met until then.",
         ],
     ),
     Range.entry(
@@ -144,7 +145,7 @@ pub(super) const ENTRIES: &[Entry] = &[
              part of the force farther out. Where the filler's resistance falls with pressure the \
              faces between the bolts conduct better than told here.",
             "Compare with the filler's value at the mean pressure, total force over the area; where it \
-             decides, state the `modulus` of the layer and estimate with `--field elastic`.",
+             decides, state the `modulus` of the layer and leave out `--field cone`.",
         ],
     ),
     Range.entry(

@@ -87,8 +87,8 @@ pub(super) const ENTRIES: &[Entry] = &[
              two reference joints solved in three dimensions (four M5 and six M4, vacuum) source to \
              sink reads 6 and 10 % high; in gas the open gap, which is missing, matters more. Rings \
              and draws use each bolt's nearest-bolt cell, brought to the grid's level.",
-            "Good for design; where a few per cent or a gas gap decide, solve the whole joint with \
-             `--field elastic`.",
+            "Good for a quick look; where a few per cent or a gas gap decide, leave out `--field cone`: \
+             the whole joint is then solved.",
         ],
     ),
     Range.entry(
@@ -114,7 +114,7 @@ pub(super) const ENTRIES: &[Entry] = &[
              its plate is thick no grid of this kind helps, because plates are taken as sheets. The \
              elastic field conducts in three dimensions on lines that gather around the bolts; a small \
              heated zone away from them leaves it coarse.",
-            "With the elastic field take a finer `--resolution`, with the cone `--field elastic`. Or \
+            "With the elastic field take a finer `--resolution`; instead of the cone take the elastic field. Or \
              estimate a part of the joint that repeats, heated and cooled in proportion; a regular \
              lattice needs one bolt with its share of both plates. Heat a wider zone, or solve the \
              spreading under a small one by itself.",

@@ -254,9 +254,26 @@ impl Response {
 
     /// Whether conditions that lie there are near enough to have their draws read here: a draw goes
     /// as far again.
-    pub(super) fn holds(&self, departure: &Departure) -> bool {
-        let rest = departure[1..].iter().zip(self.steps);
-        rest.into_iter().all(|(off, step)| off.abs() <= 0.5 * step)
+    ///
+    /// Open gaps that carry next to nothing may conduct as they like.
+    pub(super) fn holds(&self, departure: &Departure, gauge: &Gauge) -> bool {
+        const NEXT_TO_NOTHING: f64 = 0.01;
+        let shares = gauge
+            .faces
+            .iter()
+            .fold([0.0; 2], |[touching, parted], face| {
+                [touching + face.met.shares[0], parted + face.met.shares[1]]
+            });
+        let parted = shares[1] / (shares[0] + shares[1]);
+        let rest = departure[1..].iter().zip(self.steps).enumerate();
+        rest.into_iter().all(|(variable, (off, step))| {
+            let weighed = if variable == 1 {
+                off.abs() * parted
+            } else {
+                f64::INFINITY
+            };
+            off.abs() <= 0.5 * step || weighed <= NEXT_TO_NOTHING
+        })
     }
 
     /// The path at a departure on the level of the surfaces themselves.
