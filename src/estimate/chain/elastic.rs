@@ -329,7 +329,7 @@ impl ElasticModel {
                 if let Some(first) = first
                     && first
                         .response
-                        .holds(&first.gauge.departure(&case.conditions))
+                        .holds(&first.gauge.departure(&case.conditions), &first.gauge)
                     && first
                         .response
                         .covers(chain.force_range(index, first.gauge.force()))
