@@ -112,6 +112,10 @@ const FINE: Bars = Bars {
     contact: 0.002,
 };
 
+#[expect(
+    clippy::print_stdout,
+    reason = "how far off is worth reading where all is well"
+)]
 fn met(case: &Case, (sink, cooled): (&str, &str), bars: &Bars) {
     let path = case.path(cooled, bars.fineness);
     let [vacuum, perfect] = ["vacuum", "perfect"].map(|contact| case.known(contact, sink));
