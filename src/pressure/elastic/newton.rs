@@ -309,7 +309,7 @@ impl Search<'_> {
 
     /// Takes a set and the hardness of the faces over into ties and levels.
     fn take(&mut self, sets: Vec<Vec<bool>>, changed: usize, hardness: f64) -> Result<(), Failure> {
-        let other_hardness = hardness != self.hardness;
+        let other_hardness = (hardness - self.hardness).abs() > 0.0;
         if changed == 0 && !other_hardness {
             return Ok(());
         }
