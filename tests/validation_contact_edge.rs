@@ -45,6 +45,7 @@ fn on_columns(fineness: Fineness) -> Field {
             youngs_modulus: 70e9,
             poisson: 0.33,
             through: None,
+            inlay: None,
         }],
         main: 0,
         bounds: [[-RIM, RIM]; 2],

@@ -59,7 +59,7 @@ fn cantilever([length, width]: [f64; 2], layers: [[f64; 2]; 3], parts: usize) ->
     // The core carries the shear, evenly over its height.
     let core = [layers[1][1]];
     let mut load = operator.zeros();
-    for column in (0..plan.columns()).filter(|column| plan.place(*column)[0] == length) {
+    for column in (0..plan.columns()).filter(|column| plan.place(*column)[0] >= length) {
         for (step, part) in span_loads(&core, 2, [0.0, core[0]]).into_iter().enumerate() {
             let at = operator.place(column, operator.unknown(0, 2, 2 + step));
             load[at] = 0.5 * part / core[0];
@@ -131,7 +131,7 @@ fn layer<'a>(cover: &'a Cover<'a>, thickness: f64, modulus: f64) -> Layer<'a> {
     }
 }
 
-/// Three layers with an insert of 70 GPa in all.
+/// Three layers with an insert of 70 `GPa` in all.
 fn sandwich<'a>([sheet, core]: [f64; 2], modulus: f64) -> Vec<Layer<'a>> {
     let filled = |thickness: f64, modulus: f64| Layer {
         inlay: Some(Inlay {
