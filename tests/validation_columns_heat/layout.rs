@@ -354,7 +354,7 @@ impl Case {
                 youngs_modulus: 70e9,
                 poisson: 0.33,
                 through: None,
-            inlay: None,
+                inlay: None,
             }],
             main: 0,
             bounds: half.map(|half| [-half, half]),

@@ -24,7 +24,7 @@ fn base(rest: &str) -> String {
 }
 
 /// A file of two plates with two bolts; heads on the base, inserts of 8 mm.
-fn file(plates: [String; 2], proud: &str) -> String {
+fn file(plates: &[String; 2], proud: &str) -> String {
     format!(
         "[service]\nmedium = \"air\"\n{}{}[fastener]\nthread = \"M4\"\ngrade = \"8.8\"\nfrom = \"base\"\n\
          bearing = \"8 mm\"\nhole = \"4.5 mm\"\npreload = \"2 kN\"\nshank_path = false\n\
@@ -52,8 +52,8 @@ const ISOTHERMAL: &str = "heated = { face = \"isothermal\" }";
 // by another sum. 1e-6: residuals of both solutions, and the held faces.
 #[test]
 fn a_panel_conducts_the_same_upside_down() {
-    let last = file([base(ISOTHERMAL), panel(CORE, "")], "20 µm");
-    let first = file([panel(CORE, ISOTHERMAL), base("")], "20 µm");
+    let last = file(&[base(ISOTHERMAL), panel(CORE, "")], "20 µm");
+    let first = file(&[panel(CORE, ISOTHERMAL), base("")], "20 µm");
     let [last, first] =
         [last, first].map(|text| case(&text).results.source_to_sink.resistance.nominal);
     assert!((first / last - 1.0).abs() < 1e-6, "{first} {last}");
@@ -64,7 +64,7 @@ fn a_panel_conducts_the_same_upside_down() {
 // Base and sheets stand in series with both; 2 % on the areas, which are sampled.
 #[test]
 fn heat_through_long_inserts_stays_between_its_bounds() {
-    let text = file([base(ISOTHERMAL), panel(CORE, "")], "0 µm");
+    let text = file(&[base(ISOTHERMAL), panel(CORE, "")], "0 µm");
     let found = case(&text.replace("length = \"8 mm\"", "length = \"11 mm\""));
     let joint = joint::read(&text).expect("it is read");
     let k = |plate: usize| joint.plates[plate].material.conductivity.value;
@@ -97,7 +97,7 @@ fn inserts_that_stand_out_more_never_conduct_better() {
     let found: Vec<f64> = ["0 µm", "20 µm", "100 µm"]
         .into_iter()
         .map(|proud| {
-            let text = file([base(""), panel(CORE, "")], proud);
+            let text = file(&[base(""), panel(CORE, "")], proud);
             case(&text).results.source_to_sink.resistance.nominal
         })
         .collect();

@@ -131,7 +131,7 @@ fn layer<'a>(cover: &'a Cover<'a>, thickness: f64, modulus: f64) -> Layer<'a> {
     }
 }
 
-/// Three layers with an insert of 70 GPa in all.
+/// Three layers with an insert as stiff as the sheets in all.
 fn sandwich<'a>([sheet, core]: [f64; 2], modulus: f64) -> Vec<Layer<'a>> {
     let filled = |thickness: f64, modulus: f64| Layer {
         inlay: Some(Inlay {
