@@ -14,8 +14,8 @@ use crate::{
     units::{self, Quantity},
 };
 
-/// Stiffness of a core that states none, Pa (judgement: aluminium honeycomb of 50 to 80 kg/m³ has
-/// 0.5 to 1 `GPa` through the thickness by the makers' tables, from memory; the lower end).
+/// Stiffness of a core that states none, Pa (judgement: the lower end of aluminium honeycomb of 50 to
+/// 80 kg/m³ through its thickness in the makers' tables, from memory).
 const CORE_MODULUS: f64 = 5e8;
 /// Material of inserts that state none.
 const INSERT: &str = "Al 6061-T6";

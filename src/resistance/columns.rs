@@ -43,6 +43,7 @@ mod clip;
 mod conduction;
 mod equations;
 mod heat;
+mod parts;
 mod readings;
 mod rims;
 mod section;
@@ -52,7 +53,8 @@ mod zone;
 
 pub use conduction::{Conduction, Perfect, solve_both};
 pub use heat::{Health, Heat, Hottest};
+pub use parts::Part;
 pub use section::{Across, Section};
-pub use stack::{Body, Conductivity, Meeting, Part, Side, Slab, Stack};
+pub use stack::{Body, Conductivity, Meeting, Side, Slab, Stack};
 pub use terminals::{Bolt, Edge, Rim, Seat, Sink, Source, Terminals};
 pub use zone::Zone;

@@ -131,7 +131,7 @@ fn layer<'a>(cover: &'a Cover<'a>, thickness: f64, modulus: f64) -> Layer<'a> {
     }
 }
 
-/// Three layers with an insert of 70 `GPa` in all.
+/// Three layers with an insert as stiff as the sheets in all.
 fn sandwich<'a>([sheet, core]: [f64; 2], modulus: f64) -> Vec<Layer<'a>> {
     let filled = |thickness: f64, modulus: f64| Layer {
         inlay: Some(Inlay {
@@ -232,8 +232,7 @@ fn a_core_as_stiff_as_its_sheets_is_a_solid_plate() {
     assert!(hollow > 0.05 && filled < 0.02, "{hollow} {filled}");
 }
 
-// The force stays on a proud flange (1e-6 of it, as the brief of the check asks; outside the pressure is
-// zero). Contact on a flat flange does not depend on the force, so what bending adds to the height grows
+// The force stays on a proud flange: beside it faces stay apart, so that 1e-6 of the force is rounding. Contact on a flat flange does not depend on the force, so what bending adds to the height grows
 // in proportion to it: 1e-3, the residual of two solutions.
 #[test]
 fn a_proud_flange_carries_all_force_and_leaves_its_height_open() {
