@@ -118,7 +118,7 @@ fn the_ring_sum_is_that_of_the_solved_field() {
             let local = if met.pressure > 0.0 {
                 faces.conductance(met.pressure)
             } else {
-                faces.local.parted(met.gap.expect("a gap"), 0.0)
+                faces.local.parted(met.gap.expect("a gap"))
             };
             local * 2.0 * PI * radius * width
         })

@@ -761,7 +761,7 @@ fn torque_changes_only_what_crosses() {
     let local = faces(None);
     let law = Law {
         closed: |pressure| local.total(pressure),
-        parted: |opening| local.parted(opening, 0.0),
+        parted: |opening| local.parted(opening),
     };
     let forces = [1250.0, 2500.0, 5000.0, 10_000.0];
     let found = heat_under(&plates, (&contact, &forces), &law).unwrap();
@@ -789,7 +789,7 @@ fn parted_faces_conduct_by_their_gap() {
     let local = faces(Some(AIR));
     let law = Law {
         closed: |pressure| local.total(pressure),
-        parted: |opening| local.parted(opening, 0.0),
+        parted: |opening| local.parted(opening),
     };
     let touching = Law {
         closed: |pressure| local.total(pressure),
@@ -798,7 +798,7 @@ fn parted_faces_conduct_by_their_gap() {
     let vacuum = faces(None);
     let empty = Law {
         closed: |pressure| vacuum.total(pressure),
-        parted: |opening| vacuum.parted(opening, 0.0),
+        parted: |opening| vacuum.parted(opening),
     };
     let forces = [2500.0, 5000.0];
     let [parted, touching, empty] = [
@@ -818,7 +818,7 @@ fn parted_faces_conduct_by_their_gap() {
     let local_at = |force: f64| law.at(&contact, [force, radius]);
     assert!(local_at(5000.0) < local_at(2500.0) && local_at(2500.0) < local.unloaded());
     let opening = contact.gap(radius, 5000.0);
-    assert!(local_at(5000.0).to_bits() == local.parted(opening, 0.0).to_bits());
+    assert!(local_at(5000.0).to_bits() == local.parted(opening).to_bits());
     // Distance through the gas: the opening beside what rough faces leave, here a few micrometres.
     let distance = AIR.conductivity / local_at(5000.0) - opening;
     assert!((4e-6..8e-6).contains(&distance), "{distance:.2e}");

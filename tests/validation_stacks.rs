@@ -51,10 +51,10 @@ fn file(sheets: &[Sheet], bolt: &str, rest: &str) -> String {
 /// A layer of one area resistance whatever the pressure, so soft that it is pressed all over; no
 /// scatter unless stated.
 fn layer(between: [&str; 2], resistance: f64, scatter: &str) -> String {
-    let conductivity = 1e-3 / resistance;
+    // All of it lies in the boundaries: the layer thins under its pressure and conducts too well to matter.
     format!(
-        "[[filler]]\nname = \"test layer\"\nmodel = \"layer\"\nthickness = \"1 mm\"\n\
-         conductivity = \"{conductivity} W/(m·K)\"\nmodulus = \"5 MPa\"\nscatter = \"{scatter}\"\n\
+        "[[filler]]\nname = \"test layer\"\nmodel = \"layer\"\nthickness = \"0.1 mm\"\n\
+         conductivity = \"4000 W/(m·K)\"\nboundary = \"{resistance} m²·K/W\"\nmodulus = \"0.5 MPa\"\nscatter = \"{scatter}\"\n\
          between = [\"{}\", \"{}\"]\n",
         between[0], between[1]
     )
@@ -210,10 +210,11 @@ fn a_thin_shim_presses_as_if_it_were_not_there() {
     let [pair, stack] = [file(&pair, "", ""), file(&stack, "", "")].map(|text| case(&read(&text)));
     let alone = &pair.interfaces[0];
     for interface in &stack.interfaces {
-        // The shim is 1/40 of a plate thick, and the pressure spreads as far more.
+        // The shim is 1/40 of a plate thick, and the pressure spreads as far more: 2 % of the radius
+        // in either direction of the area.
         let near = |found: f64, alone: f64, what: &str| {
             let off = found / alone - 1.0;
-            assert!(off.abs() < 0.02, "{what}: {off:+.4}");
+            assert!(off.abs() < 0.04, "{what}: {off:+.4}");
         };
         near(interface.contact, alone.contact, "conductance");
         near(interface.peak, alone.peak, "peak");

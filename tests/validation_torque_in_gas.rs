@@ -79,10 +79,11 @@ fn more_force_costs_in_air_and_gains_in_vacuum() {
     let air = resistances("air");
     assert!(air.windows(2).all(|pair| pair[1] > pair[0]), "{air:?}");
     for (found, known) in air.iter().zip(IN_AIR) {
-        // The grid of `fast` is good for 2 % in gas; the distance of the mean planes under pressure
-        // is kept at 5 µm there and follows the pressure here.
+        // The gap of `fast` is 3 % narrow here (`validation_columns`), and resistance in gas goes with
+        // it; the distance of the mean planes under pressure is kept at 5 µm there and follows the
+        // pressure here.
         assert!(
-            (found / known - 1.0).abs() < 0.03,
+            (found / known - 1.0).abs() < 0.04,
             "{found} for {known}: {air:?}"
         );
     }

@@ -145,13 +145,12 @@ impl Filling {
         }
     }
 
-    /// Area resistance where the faces stand `opening` (m) further apart than where they meet under
-    /// the mean pressure `beside` (Pa), m² K/W.
+    /// Area resistance where the faces stand `opening` (m) further apart than where they meet, m² K/W.
     ///
-    /// A paste fills the gap, which is its bond line there and the opening, up to its thickness as
-    /// applied; the rest stays open, and the `medium` conductance crosses it. A pad or foil stays on
-    /// one face, and the medium crosses the opening.
-    pub(crate) fn parted(&self, [opening, beside]: [f64; 2], medium: impl Fn(f64) -> f64) -> f64 {
+    /// A paste that nothing presses keeps its thickness as applied (judgement: fresh paste; it creeps
+    /// out in time and then conducts better) and fills no more than that: the `medium` conductance
+    /// crosses what is wider. A pad or foil stays on one face, and the medium crosses the opening.
+    pub(crate) fn parted(&self, opening: f64, medium: impl Fn(f64) -> f64) -> f64 {
         let open = |gap: f64| if gap > 0.0 { medium(gap).recip() } else { 0.0 };
         match &self.shape {
             Shape::Paste {
@@ -159,10 +158,7 @@ impl Filling {
                 conductivity,
                 wetting,
                 ..
-            } => {
-                let gap = self.thickness(beside) + opening;
-                self.factor * (gap.min(*applied) + wetting) / conductivity + open(gap - applied)
-            }
+            } => self.factor * (applied + wetting) / conductivity + open(opening - applied),
             _ => self.resistance(0.0) + open(opening),
         }
     }

@@ -127,17 +127,15 @@ impl Local {
     }
 
     /// Local conductance where the faces stand `opening` (m) further apart than where they meet,
-    /// W/(m² K); `beside` is the mean pressure there, Pa.
+    /// W/(m² K).
     ///
     /// The gap is the opening plus the separation at no load. At zero opening it is
     /// [`Local::unloaded`], unless measured values or a pad that loses one face make a step. A paste
-    /// is as thick there as where it is pressed and the opening together; above its applied
-    /// thickness the medium crosses the rest.
-    pub fn parted(&self, opening: f64, beside: f64) -> f64 {
+    /// fills what its applied thickness fills; the medium crosses the rest.
+    pub fn parted(&self, opening: f64) -> f64 {
         let opening = opening.max(0.0);
         let parallel = if let Some(filling) = &self.filling {
-            let resistance = filling.parted([opening, beside], |gap| self.across(gap));
-            return self.behind_film(resistance.recip()).min(self.total(beside));
+            filling.parted(opening, |gap| self.across(gap)).recip()
         } else {
             let separation = opening + self.gap_separation(0.0);
             self.gap.map_or(0.0, |law| law.conductance(separation)) + self.radiation

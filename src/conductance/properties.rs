@@ -158,7 +158,7 @@ proptest! {
         let local = interface.prepare();
         let mut before = local.unloaded();
         for step in 0..60 {
-            let parted = local.parted(1e-8 * 10f64.powf(f64::from(step) * 0.1), 0.0);
+            let parted = local.parted(1e-8 * 10f64.powf(f64::from(step) * 0.1));
             prop_assert!(parted.is_finite() && parted >= 0.0 && parted <= before);
             before = parted;
         }

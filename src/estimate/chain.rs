@@ -352,15 +352,6 @@ impl<'a> Chain<'a> {
         }
     }
 
-    /// Mean pressure where the first interface touches, Pa, first case at nominal; 0 for the cone, whose
-    /// faces part nowhere.
-    pub(super) fn pressing(&self) -> f64 {
-        match &self.model {
-            Model::Cone(_) => 0.0,
-            Model::Elastic(model) => model.pressing(self),
-        }
-    }
-
     /// How the faces meet at a point in joint coordinates, first case at nominal; none off the
     /// faying faces or in a hole.
     pub fn met_at(&self, point: [f64; 2], state: &State) -> Option<Meeting> {

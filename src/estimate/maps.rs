@@ -12,7 +12,6 @@ pub fn field_map(chain: &Chain, columns: usize) -> Result<FieldMap, Failure> {
     let peak = chain.pressure(0, &state)?.peak;
     let first = &state.conditions.faces[0];
     let faces = first.over_many_points(peak);
-    let beside = chain.pressing();
     let window = window(chain.joint());
     let [left, lower, right, upper] = window;
     let step = (right - left) / columns as f64;
@@ -34,7 +33,7 @@ pub fn field_map(chain: &Chain, columns: usize) -> Result<FieldMap, Failure> {
             map.pressure.push(met.map_or(f64::NAN, |met| met.pressure));
             map.conductance
                 .push(met.map_or(f64::NAN, |met| match met.gap {
-                    Some(gap) if gap > 0.0 => first.local.parted(gap, beside),
+                    Some(gap) if gap > 0.0 => first.local.parted(gap),
                     _ => faces(met.pressure),
                 }));
             if let Some(gaps) = &mut map.gap {

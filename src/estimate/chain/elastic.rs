@@ -217,14 +217,6 @@ impl ElasticModel {
         self.closed(chain, case).map(|(_, solved)| solved)
     }
 
-    /// Mean pressure of the first interface in the first case, Pa; 0 where no bolt clamps.
-    pub(super) fn pressing(&self, chain: &Chain) -> f64 {
-        let closed = self.closed(chain, 0);
-        closed.map_or(0.0, |(_, solved)| {
-            solved.met().first().map_or(0.0, |met| met.pressure)
-        })
-    }
-
     /// How the faces of the first case meet at a point.
     pub(super) fn met_at(&self, chain: &Chain, point: [f64; 2]) -> Option<Meeting> {
         self.closed(chain, 0).ok()?.1.met_at(point)

@@ -78,7 +78,7 @@ impl Gauge {
             .map(|(faces, met)| FaceGauge {
                 met: *met,
                 touching: faces.conductance(met.pressure),
-                parted: faces.local.parted(met.gap, met.pressure),
+                parted: faces.local.parted(met.gap),
             });
         Self {
             force: conditions.forces.iter().sum(),
@@ -123,7 +123,7 @@ impl Gauge {
                 (ratio(now, gauge.touching), gauge.met.shares[0])
             })),
             weighted(&faces().map(|(faces, gauge)| {
-                let now = faces.local.parted(gauge.met.gap, gauge.met.pressure);
+                let now = faces.local.parted(gauge.met.gap);
                 (ratio(now, gauge.parted), gauge.met.shares[1])
             })),
             conductivity(0),

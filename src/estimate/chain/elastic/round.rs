@@ -89,10 +89,9 @@ impl Solver for Round {
         let force = conditions.forces[0];
         let faces = &conditions.faces[0];
         let touching = faces.over_many_points(contact.peak(force));
-        let beside = contact.mean_pressure(force);
         let law = Law {
             closed: |pressure| factors.touching * touching(pressure),
-            parted: |gap| factors.parted * faces.local.parted(gap, beside),
+            parted: |gap| factors.parted * faces.local.parted(gap),
         };
         let local = |radius| law.at(&contact, [force, radius]);
         let heat = plates.solve(local).map_err(Failure::Heat)?;

@@ -6,7 +6,7 @@ use crate::{
     estimate::chain::{
         conditions::Conditions,
         elastic::{
-            columns::{problem::Order, readings::mean_pressure, sandwich, terminals::Ends},
+            columns::{problem::Order, sandwich, terminals::Ends},
             solver::Factors,
         },
     },
@@ -159,8 +159,7 @@ pub(super) fn conductances(
             let laws = &conditions.faces[order.plate(index, field.faces.len())];
             let highest = face.pressure.iter().copied().fold(0.0, f64::max);
             let touching = laws.over_many_points(highest);
-            let beside = mean_pressure(face);
-            let parted = |gap: f64| factors.parted * laws.local.parted(gap, beside);
+            let parted = |gap: f64| factors.parted * laws.local.parted(gap);
             let columns = face.pressure.iter().zip(&face.gap).zip(&face.weight);
             let own = columns
                 .map(|((pressure, gap), weight)| {

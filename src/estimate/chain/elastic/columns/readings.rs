@@ -43,7 +43,7 @@ impl OnColumns {
 }
 
 /// Mean pressure as the force meets it over columns that are no slivers, Pa: `∫ p² dA/∫ p dA`.
-pub(super) fn mean_pressure(face: &FaceField) -> f64 {
+fn mean_pressure(face: &FaceField) -> f64 {
     let (mut square, mut force) = (0.0, 0.0);
     for (column, pressure) in face.pressure.iter().enumerate() {
         if face.weight[column] >= 0.5 * face.full_weight[column] {
