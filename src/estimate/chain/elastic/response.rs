@@ -356,6 +356,19 @@ pub(super) fn ends(range: [f64; 2]) -> [f64; 3] {
     [found[0], 0.0, found[found.len() - 1]]
 }
 
+/// Forces at which form and flatness are bounded: the ends, the nominal one, and one between the least
+/// and the nominal where these lie far apart, since flatness closes somewhere on the way.
+pub(super) fn bounded(range: [f64; 2]) -> Vec<f64> {
+    /// A third of the nominal force.
+    const FAR: f64 = -1.1;
+    let [least, nominal, most] = ends(range);
+    if least < FAR {
+        vec![least, 0.5 * least, nominal, most]
+    } else {
+        vec![least, nominal, most]
+    }
+}
+
 /// A departure of the force alone.
 pub(super) fn at_force(force: f64) -> Departure {
     at(force, &[0.0; VARIABLES - 1])
