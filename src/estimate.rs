@@ -9,6 +9,7 @@ mod results;
 mod surfaces;
 mod temperatures;
 
+pub(crate) use chain::LARGE_ERROR;
 pub use chain::{Chain, Meeting, State};
 pub use choice::{Choice, Fineness, Watch};
 pub use forces::Strength;

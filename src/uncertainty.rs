@@ -17,8 +17,8 @@ use rayon::prelude::*;
 
 use crate::{
     estimate::{
-        self, Band, CaseResult, Chain, Driver, Estimate, Failure, Met, Options, PlaneResult,
-        Realisation, RequirementResult, Results, Rise, State,
+        self, Band, CaseResult, Chain, Driver, Estimate, Failure, LARGE_ERROR, Met, Options,
+        PlaneResult, Realisation, RequirementResult, Results, Rise, State,
     },
     joint::{Joint, Limit, Plane, Requirement, RequirementKind},
     numerics::sampling::{Sobol, quantile},
@@ -231,6 +231,8 @@ fn judge(joint: &Joint, case: &mut CaseResult, trusted: bool) {
             Limit::Most => value <= require.limit,
             Limit::Least => value >= require.limit,
         };
+        // What the grid does not resolve meets nothing for sure.
+        let trusted = trusted && case.numerical_error <= LARGE_ERROR;
         let met = match (holds(band.nominal), unfavourable.map(holds)) {
             (true, Some(true)) if trusted => Met::Yes,
             (true, _) => Met::Uncertain,

@@ -9,7 +9,7 @@ mod levels;
 mod temperatures;
 mod warmth;
 
-pub(super) use levels::LARGE_ERROR;
+pub(crate) use levels::LARGE_ERROR;
 pub(in crate::estimate) use warmth::Warmth;
 
 use std::borrow::Cow;
