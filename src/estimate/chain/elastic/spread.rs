@@ -131,20 +131,19 @@ impl ElasticModel {
             let error = self.pattern_error(chain, (case, nominal), (&gauge, &response))?;
             response.error = worse(response.error, error);
         }
-        let bounds = match known {
+        let bounds = if let Some(known) = known {
             // Ratios hardly know the temperature of a case; those of the first serve all.
-            Some(known) => known.bounds.clone(),
-            None => {
-                // From the nominal force outwards, so that each starts from the nearest.
-                let mut forces = response::bounded(range);
-                forces.sort_by(|one, other| one.abs().total_cmp(&other.abs()));
-                let mut bounds = forces
-                    .into_iter()
-                    .map(|force| self.bounds(chain, nominal, force))
-                    .collect::<Result<Vec<Bounds>, Failure>>()?;
-                bounds.sort_by(|one, other| one.force.total_cmp(&other.force));
-                bounds
-            }
+            known.bounds.clone()
+        } else {
+            // From the nominal force outwards, so that each starts from the nearest.
+            let mut forces = response::bounded(range);
+            forces.sort_by(|one, other| one.abs().total_cmp(&other.abs()));
+            let mut bounds = forces
+                .into_iter()
+                .map(|force| self.bounds(chain, nominal, force))
+                .collect::<Result<Vec<Bounds>, Failure>>()?;
+            bounds.sort_by(|one, other| one.force.total_cmp(&other.force));
+            bounds
         };
         Ok(Spread {
             gauge,
