@@ -1,5 +1,6 @@
 //! Arguments, files and exit codes: the only input and output.
 
+mod arrange;
 mod chain;
 mod check;
 mod console;
@@ -27,7 +28,7 @@ ringsum --help                 lists every command
 ";
 
 const EXIT_CODES: &str = "\
-Exit codes: 0 done, 1 failure, 2 faulty input or usage, 3 cautions with --strict.
+Exit codes: 0 done, 1 failure, 2 faulty input or usage, 3 cautions with --strict, 130 interrupted.
 Of several files, any failure or fault makes it 1 after all are done.
 A joint file named - is read from standard input.";
 
@@ -58,6 +59,7 @@ enum Command {
     Estimate(estimate::Estimate),
     Torque(torque::Torque),
     Draw(draw::Draw),
+    Arrange(arrange::Arrange),
     List(list::List),
     Explain(explain::Explain),
     #[command(hide = true)]
@@ -110,6 +112,7 @@ impl Command {
             Self::Estimate(command) => command.run(console),
             Self::Torque(command) => command.run(console),
             Self::Draw(command) => command.run(console),
+            Self::Arrange(command) => command.run(console),
             Self::List(command) => command.run(console),
             Self::Explain(command) => command.run(console),
             Self::Completions(command) => command.run(console),

@@ -1,5 +1,6 @@
 //! Drawings from results only: the same marks as SVG and as PNG.
 
+mod arrange;
 mod axis;
 mod clip;
 mod cumulative;
@@ -16,6 +17,7 @@ mod sheet;
 mod torque;
 mod warmth;
 
+pub use arrange::ArrangePlot;
 pub use cumulative::{CumulativePlot, Curve, RadiusMark};
 pub use plan::{
     DetailKind, FacePair, PlanBolt, PlanDetail, PlanMap, PlanOutline, PlanPair, PlanShape, Scale,
@@ -49,6 +51,8 @@ pub enum Drawing {
     Cumulative(CumulativePlot),
     /// Resistance against torque.
     Torque(TorqueSweep),
+    /// Layouts of a search.
+    Arrange(Box<ArrangePlot>),
 }
 
 /// Why a drawing cannot be made.
@@ -94,6 +98,7 @@ fn sheet(drawing: &Drawing) -> Result<sheet::Sheet, FigureError> {
         Drawing::Section(plot) => section::draw(plot),
         Drawing::Cumulative(plot) => cumulative::draw(plot),
         Drawing::Torque(sweep) => torque::draw(sweep),
+        Drawing::Arrange(plot) => arrange::draw(plot),
     }
 }
 

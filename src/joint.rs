@@ -8,6 +8,7 @@ pub mod checked;
 pub mod fields;
 pub mod sections;
 
+mod arrange;
 mod beyond_cone;
 mod cold;
 mod collector;
@@ -240,6 +241,7 @@ fn assembled(file: &Record, tables: &mut Tables<'_>, collector: &mut Collector) 
     let contact = contact::read(file, &plates, collector);
     let fasteners = fasteners::read(file, (&plates, &own), collector);
     let losses = contact::losses(file, collector);
+    let arrange = arrange::read(file, collector);
     let plates: Option<Vec<Plate>> = plates
         .into_iter()
         .map(plates::PlateDraft::finished)
@@ -255,6 +257,7 @@ fn assembled(file: &Record, tables: &mut Tables<'_>, collector: &mut Collector) 
         fillers: fillers?,
         measured: measured?,
         losses: losses?,
+        arrange: arrange?,
         assumptions: Vec::new(),
     };
     cold::check(&joint, file, collector);

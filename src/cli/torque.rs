@@ -109,7 +109,7 @@ impl Torque {
     }
 }
 
-fn format(path: &Path) -> Result<Format, Trouble> {
+pub(super) fn format(path: &Path) -> Result<Format, Trouble> {
     let ending = path
         .extension()
         .and_then(|ending| ending.to_str())

@@ -14,7 +14,7 @@ pub(in crate::estimate) use warmth::Warmth;
 
 use std::borrow::Cow;
 
-use conditions::Conditions;
+pub use conditions::Conditions;
 use cone::ConeModel;
 use elastic::ElasticModel;
 
@@ -25,7 +25,7 @@ use crate::{
         RingRow, Strength, Watch,
         forces::{self, Group},
     },
-    joint::{Fastener, Joint, Medium, Tightening},
+    joint::{Bounds, Fastener, Joint, Medium, Tightening},
     pressure::Cone,
     resistance::{self, Cells, Path},
 };
@@ -56,6 +56,15 @@ pub struct State {
     pub conditions: Conditions,
     /// Resistances, model form applied.
     pub path: Path,
+}
+
+/// An end of the clamp force in service.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum ForceEnd {
+    /// Highest friction, weakest tool, all losses.
+    Least,
+    /// Lowest friction, strongest tool, no loss.
+    Largest,
 }
 
 /// How the faces meet at a point.
@@ -123,6 +132,36 @@ impl<'a> Chain<'a> {
     /// Groups whose preload is stated keep it.
     pub fn with_torque(&self, group: usize, torque: f64) -> Result<Chain<'static>, Failure> {
         self.with(with_torque(self.joint(), group, torque))
+    }
+
+    /// The same joint with every bolt at its least or its largest force in service of one case;
+    /// plates and contact are shared.
+    ///
+    /// Checked: `force_ends_are_those_of_the_band`.
+    pub fn at_force_end(&self, case: usize, end: ForceEnd) -> Result<Chain<'static>, Failure> {
+        let mut joint = self.joint().clone();
+        // The stated ends hold every loss already.
+        joint.losses = None;
+        let forces: Vec<f64> = self
+            .joint
+            .fasteners
+            .iter()
+            .zip(&self.groups)
+            .map(|(fastener, group)| {
+                let band = group.service_band(self.joint(), fastener, case);
+                let service = match end {
+                    ForceEnd::Least => band.low,
+                    ForceEnd::Largest => band.high,
+                };
+                // What the temperature adds is added again in the new joint.
+                let gain = group.losses(&joint, case, 0.0).temperature;
+                service.unwrap_or(band.nominal) - gain
+            })
+            .collect();
+        for (fastener, force) in joint.fasteners.iter_mut().zip(forces) {
+            fastener.tightening = Tightening::Preload(Bounds::exact(force));
+        }
+        self.with(joint)
     }
 
     /// The same joint in vacuum; plates, cells and grid are shared.

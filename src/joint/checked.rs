@@ -1,5 +1,6 @@
 //! The checked joint: SI, nothing missing, every default already recorded as an assumption.
 
+mod arrange;
 mod flatness_map;
 mod heat;
 mod plates;
@@ -7,6 +8,7 @@ mod sandwich;
 
 use crate::{catalog, diagnostic::Assumption};
 
+pub use arrange::{Arrange, Family, Symmetry};
 pub use flatness_map::FlatnessMap;
 pub use heat::{CooledPart, Cooling, Edge, HeatedZone, Heating, Sink, Source, Zone};
 pub use plates::{
@@ -43,6 +45,8 @@ pub struct Joint {
     pub measured: Option<Measured>,
     /// Losses of clamp force asked for; without them losses act on the low force only.
     pub losses: Option<Losses>,
+    /// What a search of layouts may try; none where the file says nothing of it.
+    pub arrange: Option<Arrange>,
     /// What the file did not state.
     pub assumptions: Vec<Assumption>,
 }
