@@ -107,7 +107,11 @@ fn chart(
     if let Some((limit, _)) = near {
         (low, high) = (low.min(limit), high.max(limit));
     }
-    let across = Axis::around(few, many);
+    let across = match answer.goal {
+        Goal::Mass => Axis::around(few, many),
+        // From nothing, and wide enough for ticks at whole numbers.
+        Goal::Bolts | Goal::Resistance => Axis::over(0.0, (many + 1.0).max(8.0)),
+    };
     let up = Axis::around(low, high);
     let frame = Frame {
         left: MARGIN + axis::side_room(&up, HEIGHT),
@@ -151,7 +155,7 @@ fn chart(
         let place = at(*point);
         sheet.disc(place, 4.0, colour(row));
         if answer.best == Some(index) {
-            sheet.line(&circle(place, 7.5), Stroke::solid(WIDE, ACCENT));
+            sheet.line(&ring(place, 7.5), Stroke::solid(WIDE, ACCENT));
         }
     }
     let key = [
@@ -239,7 +243,7 @@ fn plans(sheet: &mut Sheet, top: f64, plot: &ArrangePlot) -> Result<f64, FigureE
         sheet.line(&shape(first), stroke);
         for bolt in &row.places {
             let centre = at(*bolt);
-            sheet.line(&circle(centre, scale * head), Stroke::solid(NARROW, INK));
+            sheet.line(&ring(centre, scale * head), Stroke::solid(NARROW, INK));
             sheet.disc(centre, 1.6, ramp::colour(0.85));
         }
         let text = Lettering::plain(LABEL - 1.0, INK, Anchor::Start);
@@ -254,6 +258,13 @@ fn plans(sheet: &mut Sheet, top: f64, plot: &ArrangePlot) -> Result<f64, FigureE
         bottom = bottom.max(upper + height + CAPTION);
     }
     Ok(bottom)
+}
+
+/// A circle as a closed line.
+fn ring(centre: [f64; 2], radius: f64) -> Vec<[f64; 2]> {
+    let mut line = circle(centre, radius);
+    line.extend(line.first().copied());
+    line
 }
 
 /// Points around a shape, m.

@@ -31,13 +31,13 @@ impl Defaults {
             taken.push(("families", "edge, grid, circle, free".to_owned()));
         }
         if arrange.edge_distance.is_none() {
-            let text = format!("{EDGE_DISTANCE} thread diameters from axis to edge");
+            let text = format!("{EDGE_DISTANCE} thread diameters, axis to edge, common practice");
             taken.push(("edge_distance", text));
         }
         if arrange.pitch.is_none() {
             taken.push((
                 "pitch",
-                format!("{PITCH} thread diameters from axis to axis"),
+                format!("{PITCH} thread diameters, axis to axis, common practice"),
             ));
         }
         if arrange.step.is_none() {

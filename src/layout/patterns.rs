@@ -139,9 +139,33 @@ fn grid(joint: &Joint, counts: [usize; 2], margins: [f64; 2]) -> Vec<[f64; 2]> {
 /// Places that are mirrored into each other.
 pub(super) type Orbit = Vec<[f64; 2]>;
 
+/// A place this near to a mirror line stands on it, m.
+const ON_MIRROR: f64 = 5e-6;
+
+/// Along which axes a place stands on a mirror line, from which no mirrored layout moves it.
+pub(super) fn on_mirror(joint: &Joint, symmetry: Symmetry, place: [f64; 2]) -> [bool; 2] {
+    let [low, high] = corners(joint);
+    let mirrors = [
+        matches!(symmetry, Symmetry::X | Symmetry::Both),
+        matches!(symmetry, Symmetry::Y | Symmetry::Both),
+    ];
+    [0, 1].map(|k| {
+        let middle = f64::midpoint(low[k], high[k]);
+        mirrors[k] && (place[k] - middle).abs() <= ON_MIRROR
+    })
+}
+
 /// A place with its mirror images, each once.
 pub(super) fn orbit(joint: &Joint, symmetry: Symmetry, place: [f64; 2]) -> Orbit {
     let [low, high] = corners(joint);
+    let held = on_mirror(joint, symmetry, place);
+    let place = [0, 1].map(|k| {
+        if held[k] {
+            f64::midpoint(low[k], high[k])
+        } else {
+            place[k]
+        }
+    });
     let mirrored = |[x, y]: [f64; 2], [across, up]: [bool; 2]| {
         [
             if across { low[0] + high[0] - x } else { x },

@@ -11,7 +11,7 @@ use crate::{
     joint::Family,
     layout::{
         Constraints, Layout,
-        patterns::{orbit, rounded_place},
+        patterns::{on_mirror, orbit, rounded_place},
         search::{Bank, Search},
     },
 };
@@ -25,12 +25,14 @@ const SPREAD: f64 = 1e-5;
 /// Cost of a distance missed by one step, in values of the start.
 const PENALTY: f64 = 10.0;
 
-/// The layout as a function of the coordinates of one place of each orbit, in lattice steps.
+/// The layout as a function of the coordinates that may move, in lattice steps.
 struct Problem<'a> {
     search: &'a Search<'a>,
     bank: &'a Bank<'a>,
     constraints: Constraints<'a>,
     start: &'a Layout,
+    /// One place of each orbit, and which of its coordinates may move.
+    firsts: &'a [([f64; 2], [bool; 2])],
     step: f64,
     /// What a missed distance costs, by step.
     penalty: f64,
@@ -42,12 +44,20 @@ impl Problem<'_> {
     fn places(&self, at: &[f64]) -> Vec<[f64; 2]> {
         let joint = &self.search.sizes[self.start.size].joint;
         let symmetry = self.search.arrange.symmetry;
-        let firsts = at
-            .chunks_exact(2)
-            .map(|pair| [pair[0] * self.step, pair[1] * self.step]);
-        firsts
-            .flat_map(|first| orbit(joint, symmetry, rounded_place(first)))
-            .collect()
+        let mut next = at.iter();
+        let mut places = Vec::with_capacity(self.start.places.len());
+        for (first, moves) in self.firsts {
+            let mut first = *first;
+            for k in 0..2 {
+                if moves[k]
+                    && let Some(moved) = next.next()
+                {
+                    first[k] = moved * self.step;
+                }
+            }
+            places.extend(orbit(joint, symmetry, rounded_place(first)));
+        }
+        places
     }
 }
 
@@ -99,7 +109,18 @@ pub(super) fn refined(search: &Search, bank: &Bank, layout: &Layout) -> Layout {
         }
     }
     let step = search.step();
-    let start: Vec<f64> = firsts.iter().flatten().map(|at| at / step).collect();
+    let symmetry = search.arrange.symmetry;
+    let firsts: Vec<([f64; 2], [bool; 2])> = firsts
+        .into_iter()
+        .map(|first| (first, on_mirror(joint, symmetry, first).map(|held| !held)))
+        .collect();
+    let start: Vec<f64> = firsts
+        .iter()
+        .flat_map(|(first, moves)| (0..2).filter(|k| moves[*k]).map(|k| first[k] / step))
+        .collect();
+    if start.is_empty() {
+        return layout.clone();
+    }
     let simplex: Vec<Vec<f64>> = std::iter::once(start.clone())
         .chain((0..start.len()).map(|axis| {
             let mut corner = start.clone();
@@ -113,6 +134,7 @@ pub(super) fn refined(search: &Search, bank: &Bank, layout: &Layout) -> Layout {
         bank,
         constraints: search.constraints(layout.size),
         start: layout,
+        firsts: &firsts,
         step,
         penalty: PENALTY * layout.value.abs(),
         best: &best,

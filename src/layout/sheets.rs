@@ -79,7 +79,7 @@ fn read(weights: &[(usize, f64)], field: &[f64]) -> f64 {
 impl Sheets {
     /// Lays the plates of some sizes of one joint on a grid and solves them without bolts.
     ///
-    /// Checked: `a_round_pair_meets_the_ring_network`, `two_bolts_on_a_strip_carry_half_each`.
+    /// Checked: `every_reading_stays_near_the_closed_form_chain`, `two_like_bolts_are_readings_of_their_mirror`.
     pub fn new(sizes: &[Size]) -> Result<Self, Failure> {
         let Some(first) = sizes.first() else {
             return Err(Failure::NoPath);

@@ -58,16 +58,12 @@ pub fn answer(answer: &Answer, defaults: &Defaults) -> String {
     text.push_str(&best(answer));
     for row in &answer.rows {
         if let Verdict::Failed(failure) = &row.verdict {
-            let line = format!("failed   {} {}: {}", row.places.len(), row.label, failure);
-            text.push_str(&wrapped(&plain(&line), WIDTH, 9));
-            text.push('\n');
+            let line = format!("{} {}: {failure}", row.places.len(), row.label);
+            let _ = writeln!(text, "failed   {}", wrapped(&plain(&line), WIDTH - 9, 9));
         }
     }
     for (key, value) in &defaults.taken {
-        let _ = writeln!(
-            text,
-            "assumed  {key}: {value} (common practice, not stated)"
-        );
+        let _ = writeln!(text, "assumed  {key}: {value} (not stated)");
     }
     if !answer.passed_over.is_empty() {
         let _ = writeln!(
@@ -162,14 +158,14 @@ fn best(answer: &Answer) -> String {
         .map(|[x, y]| format!("({}, {})", millimetres(*x), millimetres(*y)))
         .collect();
     let line = format!(
-        "best     {} {}, {}: {} K/W; places in mm {}",
+        "{} {}, {}: {} K/W; places in mm {}",
         row.places.len(),
         plain(&row.label),
         pattern(row),
         four(row.value()),
         places.join(" ")
     );
-    format!("{}\n", wrapped(&line, WIDTH, 9))
+    format!("best     {}\n", wrapped(&line, WIDTH - 9, 9))
 }
 
 /// A length of a layout in mm, whole micrometres.
