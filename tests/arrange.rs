@@ -31,7 +31,7 @@ cooled = { film = "2000 W/(m²·K)" }
 thread = "M4"
 grade = "8.8"
 head = "socket"
-torque = "1.5 N·m"
+torque = "1 N·m"
 at = [["10 mm", "10 mm"]] # a start
 
 [arrange]

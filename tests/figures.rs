@@ -1,5 +1,7 @@
 //! Figures as files: well formed, complete, repeatable, and errors instead of panics.
 
+#[path = "figures/arrange.rs"]
+mod arrange;
 #[path = "figures/heat.rs"]
 mod heat;
 
@@ -183,6 +185,7 @@ fn every_drawing() -> Vec<Drawing> {
         Drawing::Plan(furnished(
             PlanMap::gap("Box on panel", &solved()).expect("a solved field knows its gap"),
         )),
+        arrange::drawing(),
         heat::flux(),
         Drawing::Faces(Box::new(heat::faces(Some(22.0)))),
         Drawing::Section(Box::new(heat::section(Some(22.0)))),

@@ -53,7 +53,7 @@ fn demo_joints_print_what_they_printed() {
     }
     assert_eq!(
         (seen, beyond_cone),
-        (10, 5),
+        (11, 5),
         "eleven demo joints for the cone, five beyond it"
     );
     assert!(changed.is_empty(), "changed: {changed:#?}");

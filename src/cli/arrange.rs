@@ -399,7 +399,7 @@ impl From<Failure> for Trouble {
                 "state what differs from the first fastener group: thread, hole, torque"
             }
             Failure::Overstressed(_) => {
-                "lower the torque, or allow a stronger grade in arrange.sizes"
+                "lower the torque, put washers under head and nut, or allow stronger fasteners in arrange.sizes"
             }
             Failure::NoLayout(_) => {
                 "allow other numbers of bolts, smaller sizes or distances in [arrange]"

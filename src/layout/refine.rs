@@ -17,7 +17,7 @@ use crate::{
 };
 
 /// Iterations for each coordinate.
-const ITERATIONS: u64 = 12;
+const ITERATIONS: u64 = 25;
 /// First step of the simplex in lattice steps.
 const FIRST_STEP: f64 = 0.5;
 /// Spread of the simplex at which it ends, relative to the value.
