@@ -1,3 +1,5 @@
+//! The screening against the closed-form chain, and its symmetries.
+
 use crate::{
     estimate::{Chain, Realisation},
     joint,
