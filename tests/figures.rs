@@ -464,6 +464,10 @@ fn hostile_titles_stay_text() {
                 plot.curves[0].label = HOSTILE.into();
                 plot.marks[0].name = HOSTILE.into();
             }
+            Drawing::Arrange(plot) => {
+                plot.answer.title = HOSTILE.repeat(40);
+                plot.answer.rows[0].label = HOSTILE.repeat(9);
+            }
             Drawing::Torque(sweep) => {
                 sweep.title = HOSTILE.into();
                 sweep.group = "x".repeat(5000);

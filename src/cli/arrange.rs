@@ -117,7 +117,7 @@ struct Read {
 impl Read {
     /// Another layout of the same file, as the reader takes it.
     fn again(&self, text: &str) -> Result<Joint, String> {
-        let files = |name: &str| input::table(&self.folder, name).map_err(Into::into);
+        let files = |name: &str| input::table(&self.folder, name);
         joint::read_with_files(text, &[], &files).map_err(|told| {
             let first = told.faults.first();
             first.map_or_else(String::new, |(_, fault)| fault.message.clone())

@@ -68,7 +68,12 @@ pub(super) fn draw(plot: &ArrangePlot) -> Result<Sheet, FigureError> {
         answer.case
     );
     let top = sheet.header(&answer.title, &subtitle) + 10.0;
-    let bottom = chart(&mut sheet, top, (answer, &points, limit));
+    let charted = Charted {
+        answer,
+        points: &points,
+        limit,
+    };
+    let bottom = chart(&mut sheet, top, charted);
     let below = plans(&mut sheet, bottom + 12.0, plot)?;
     sheet.size[1] = below + 12.0;
     Ok(sheet)
@@ -88,11 +93,24 @@ fn cost_title(answer: &Answer) -> &'static str {
     }
 }
 
+/// What the chart shows.
+#[derive(Clone, Copy)]
+struct Charted<'a> {
+    answer: &'a Answer,
+    /// Cost and resistance of every row.
+    points: &'a [[f64; 2]],
+    limit: Option<(f64, Limit)>,
+}
+
 /// The rows as dots, the front as a line, the requirement; returns the lower edge of the key.
 fn chart(
     sheet: &mut Sheet,
     top: f64,
-    (answer, points, limit): (&Answer, &[[f64; 2]], Option<(f64, Limit)>),
+    Charted {
+        answer,
+        points,
+        limit,
+    }: Charted,
 ) -> f64 {
     let extent = |k: usize| {
         points

@@ -12,6 +12,10 @@ use crate::joint::{
 const MOST_BOLTS: usize = 60;
 
 /// Reads `[arrange]`; the outer none when it is faulty, the inner when the file has none.
+#[expect(
+    clippy::option_option,
+    reason = "a faulty table and none are two things"
+)]
 pub(super) fn read(file: &Record, collector: &mut Collector) -> Option<Option<Arrange>> {
     let Some(record) = file.record("arrange") else {
         return (!file.has("arrange")).then_some(None);

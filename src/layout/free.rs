@@ -175,7 +175,7 @@ fn random(judge: &Judge, start: u64) -> Option<Vec<usize>> {
     (judge.count(&chosen) == unit.bolts).then_some(chosen)
 }
 
-/// The next number of SplitMix64 (Steele, Lea and Flood 2014, constants from memory).
+/// The next number of `SplitMix64` (Steele, Lea and Flood 2014, constants from memory).
 fn split_mix(state: &mut u64) -> u64 {
     *state = state.wrapping_add(0x9e37_79b9_7f4a_7c15);
     let mut z = *state;

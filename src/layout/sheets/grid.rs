@@ -29,6 +29,20 @@ pub(super) enum Faces {
     Met,
 }
 
+impl Faces {
+    /// Conductance between the sheets where no bolt presses, W/(m² K).
+    fn open(self, size: &Size, interface: usize) -> f64 {
+        let transverse = size.transverse(interface);
+        match self {
+            Self::Met => transverse.recip(),
+            Self::AsTheyAre => {
+                let open = size.conditions.faces[interface].conductance(0.0);
+                (open.max(LEAST_OPEN).recip() + transverse).recip()
+            }
+        }
+    }
+}
+
 /// All plates of a joint on one grid; the nodes of a cell follow each other.
 #[derive(Debug)]
 pub(super) struct Grid {
@@ -215,7 +229,7 @@ impl Grid {
     /// The cell after one along the outer (0) or inner (1) loop.
     fn next(&self, cell: usize, along: usize) -> Option<usize> {
         if along == 1 {
-            ((cell + 1) % self.rows() != 0).then_some(cell + 1)
+            (!(cell + 1).is_multiple_of(self.rows())).then_some(cell + 1)
         } else {
             (cell + self.rows() < self.cells()).then_some(cell + self.rows())
         }
@@ -260,7 +274,7 @@ impl Grid {
             }
             for interface in 0..plates - 1 {
                 let area = self.meeting[interface][cell];
-                let across = self.open(size, interface, faces);
+                let across = faces.open(size, interface);
                 join(
                     self.node(cell, interface),
                     self.node(cell, interface + 1),
@@ -278,18 +292,6 @@ impl Grid {
             }
         }
         matrix.factor().map_err(|_| Failure::NoPath)
-    }
-
-    /// Conductance between the sheets where no bolt presses, W/(m² K).
-    fn open(&self, size: &Size, interface: usize, faces: Faces) -> f64 {
-        let transverse = size.transverse(interface);
-        match faces {
-            Faces::Met => transverse.recip(),
-            Faces::AsTheyAre => {
-                let open = size.conditions.faces[interface].conductance(0.0);
-                (open.max(LEAST_OPEN).recip() + transverse).recip()
-            }
-        }
     }
 
     /// Conductance of the open faces of the first interface, W/K.
@@ -453,7 +455,7 @@ impl Grid {
             return self.next(cell, along);
         }
         if along == 1 {
-            (cell % self.rows() != 0).then(|| cell - 1)
+            (!cell.is_multiple_of(self.rows())).then(|| cell - 1)
         } else {
             cell.checked_sub(self.rows())
         }
