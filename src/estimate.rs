@@ -10,7 +10,7 @@ mod surfaces;
 mod temperatures;
 
 pub(crate) use chain::LARGE_ERROR;
-pub use chain::{Chain, Meeting, State};
+pub use chain::{Chain, DrawPlan, Drawn, Meeting, State, Workspace};
 pub use choice::{Choice, Fineness, Watch};
 pub use forces::Strength;
 pub use maps::{field_map, ring_tables};

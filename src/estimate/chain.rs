@@ -2,6 +2,7 @@
 
 mod conditions;
 mod cone;
+mod draw;
 mod elastic;
 mod form;
 mod geometry;
@@ -9,6 +10,7 @@ mod levels;
 mod temperatures;
 mod warmth;
 
+pub use draw::{DrawPlan, Drawn, Workspace};
 pub(crate) use levels::LARGE_ERROR;
 pub(in crate::estimate) use warmth::Warmth;
 

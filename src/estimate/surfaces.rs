@@ -3,8 +3,8 @@
 use crate::{
     catalog::{Datum, Material},
     conductance::{Face, Hardness, Interface, Layer, gas},
-    estimate::{Failure, Realisation, chain::Warmth},
-    joint::{Facing, Joint, Measured, MeasuredKind, Medium, Plate},
+    estimate::{Failure, Realisation},
+    joint::{Bounds, Facing, Joint, Measured, MeasuredKind, Medium, Plate},
 };
 
 /// Hardness over its catalogue value when the catalogue knows no range.
@@ -24,121 +24,190 @@ const LAW_FACTOR: f64 = 1.15;
 /// Scatter of the gas parameter through the accommodation, one standard deviation (judgement).
 const GAS_FACTOR: f64 = 1.2;
 
-/// Conductivity of a plate at a temperature and a realisation, W/(m K); in its plane where that
-/// through it differs.
-pub fn conductivity(plate: &Plate, temperature: f64, place: f64) -> Result<f64, Failure> {
-    let datum = &plate.material.conductivity;
-    let value = plate
-        .material
-        .conductivity_at(temperature)
-        .map_err(|fault| Failure::Cold(fault.to_string()))?;
-    Ok(value * factor_at(datum, CONDUCTIVITY_FACTOR, place))
+/// Conductivity of a plate with all looked up that no draw moves.
+#[derive(Clone, Copy, Debug)]
+pub struct Conducting {
+    value: f64,
+    bounds: [f64; 2],
 }
 
-/// Conductivity of every plate at its temperature, W/(m K).
-pub fn conductivities(
-    joint: &Joint,
-    warmth: &Warmth,
-    at: &Realisation,
-) -> Result<Vec<f64>, Failure> {
-    let plates = joint.plates.iter().enumerate();
-    plates
-        .map(|(index, plate)| {
-            let place = at.conductivity_of(joint, index);
-            conductivity(plate, warmth.plate(index), place)
+impl Conducting {
+    /// A plate at a temperature, K.
+    pub fn of(plate: &Plate, temperature: f64) -> Result<Self, Failure> {
+        Ok(Self {
+            value: plate
+                .material
+                .conductivity_at(temperature)
+                .map_err(|fault| Failure::Cold(fault.to_string()))?,
+            bounds: bounds_of(&plate.material.conductivity, CONDUCTIVITY_FACTOR),
         })
-        .collect()
+    }
+
+    /// At a place of its range, W/(m K); in its plane where that through the plate differs.
+    #[inline]
+    pub fn at(&self, place: f64) -> f64 {
+        self.value * between(self.bounds, place)
+    }
 }
 
-/// Everything the laws need of an interface (0 is the warmest), at a temperature in K.
-///
-/// Roughness and slope of the warm faces lie at one place of their ranges in all interfaces, and so
-/// do those of the cold faces: the same shop makes them. Law, hardness, filler and gas move alike.
-pub fn interface(
-    joint: &Joint,
-    (index, temperature): (usize, f64),
-    at: &Realisation,
-) -> Result<Interface, Failure> {
-    let filler = joint.filler(index);
-    let measured = joint.measured.as_ref();
-    Ok(Interface {
-        faces: [
-            face(joint, (index, Facing::Cold, temperature), at)?,
-            face(joint, (index, Facing::Warm, temperature), at)?,
-        ],
-        law: joint.contact.law,
-        gas: match &joint.service.medium {
+/// Everything the laws need of an interface, with all looked up that no draw moves.
+#[derive(Clone, Debug)]
+pub struct Facets {
+    nominal: Interface,
+    sides: [Side; 2],
+    gas: Option<gas::Rarefied>,
+    solid: f64,
+    filler: f64,
+}
+
+/// A face of an interface and how far it may move.
+#[derive(Clone, Copy, Debug)]
+struct Side {
+    plate: usize,
+    conducting: Conducting,
+    /// What the conductivity in the plane is multiplied by below a spot.
+    below_spots: f64,
+    roughness: Bounds,
+    slope: f64,
+    slope_factor: f64,
+    hardness: Hardness,
+    hardness_bounds: [f64; 2],
+}
+
+impl Facets {
+    /// An interface (0 is the warmest) at a temperature in K.
+    pub fn of(joint: &Joint, (index, temperature): (usize, f64)) -> Result<Self, Failure> {
+        let filler = joint.filler(index);
+        let measured = joint.measured.as_ref();
+        let sides = [
+            side(joint, (index, Facing::Cold, temperature))?,
+            side(joint, (index, Facing::Warm, temperature))?,
+        ];
+        let gas = match &joint.service.medium {
             Medium::Vacuum => None,
-            Medium::Gas { gas, pressure } => Some(gas::at(
-                gas,
-                *pressure,
-                temperature,
-                GAS_FACTOR.powf(at.gas),
-            )),
-        },
-        temperature,
-        filler: filler.map(|filler| filler.kind.clone()),
-        measured: local_points(measured),
-        solid_factor: measured
-            .map_or(LAW_FACTOR, |measured| measured.factor)
-            .powf(at.law),
-        filler_factor: filler.map_or(1.0, |filler| filler.factor.powf(at.filler)),
-        filler_modulus: None,
+            Medium::Gas { gas, pressure } => Some(gas::Rarefied::of(gas, *pressure, temperature)),
+        };
+        let nominal = Interface {
+            faces: [
+                face(joint, (index, Facing::Cold), &sides[0]),
+                face(joint, (index, Facing::Warm), &sides[1]),
+            ],
+            law: joint.contact.law,
+            gas: gas.map(|gas| gas.with(1.0)),
+            temperature,
+            filler: filler.map(|filler| filler.kind.clone()),
+            measured: local_points(measured),
+            solid_factor: 1.0,
+            filler_factor: 1.0,
+            filler_modulus: None,
+        };
+        Ok(Self {
+            nominal,
+            sides,
+            gas,
+            solid: measured.map_or(LAW_FACTOR, |measured| measured.factor),
+            filler: filler.map_or(1.0, |filler| filler.factor),
+        })
+    }
+
+    /// The same where the pressure on the layer itself is known, with pressure over true strain, Pa.
+    #[must_use]
+    pub fn pressed(mut self, filler_modulus: Option<f64>) -> Self {
+        self.nominal.filler_modulus = filler_modulus;
+        self
+    }
+
+    /// The interface at a realisation of the joint it belongs to.
+    ///
+    /// Roughness and slope of the warm faces lie at one place of their ranges in all interfaces, and
+    /// so do those of the cold faces: the same shop makes them. Law, hardness, filler and gas move
+    /// alike.
+    pub fn at(&self, joint: &Joint, at: &Realisation) -> Interface {
+        let mut found = self.nominal.clone();
+        for (index, (face, side)) in found.faces.iter_mut().zip(&self.sides).enumerate() {
+            let place = at.conductivity_of(joint, side.plate);
+            face.conductivity = side.conducting.at(place) * side.below_spots;
+            face.roughness = side.roughness.at(at.roughness[index]);
+            face.slope = side.slope * side.slope_factor.powf(at.slope[index]);
+            let factor = between(side.hardness_bounds, at.hardness);
+            face.hardness = match side.hardness {
+                Hardness::Micro { c1, c2 } => Hardness::Micro {
+                    c1: c1 * factor,
+                    c2,
+                },
+                Hardness::Meyer(value) => Hardness::Meyer(value * factor),
+            };
+        }
+        found.gas = self.gas.map(|gas| gas.with(GAS_FACTOR.powf(at.gas)));
+        found.solid_factor = self.solid.powf(at.law);
+        found.filler_factor = self.filler.powf(at.filler);
+        found
+    }
+}
+
+fn side(
+    joint: &Joint,
+    (interface, facing, temperature): (usize, Facing, f64),
+) -> Result<Side, Failure> {
+    // The warm face of an interface looks towards the cold side.
+    let index = match facing {
+        Facing::Cold => interface,
+        Facing::Warm => interface + 1,
+    };
+    let plate = &joint.plates[index];
+    let finish = plate.face(facing);
+    let (hardness, hardness_bounds) = hardness((joint, interface), plate)?;
+    Ok(Side {
+        plate: index,
+        conducting: Conducting::of(plate, temperature)?,
+        // Below a spot a solid of two conductivities spreads heat as one of √(k_in k_through) does.
+        below_spots: plate.material.through_ratio().sqrt(),
+        roughness: finish.roughness,
+        slope: finish.slope,
+        slope_factor: finish.slope_factor,
+        hardness,
+        hardness_bounds,
     })
 }
 
-fn face(
-    joint: &Joint,
-    (interface, facing, temperature): (usize, Facing, f64),
-    at: &Realisation,
-) -> Result<Face, Failure> {
-    // The warm face of an interface looks towards the cold side.
-    let side = match facing {
-        Facing::Cold => 0,
-        Facing::Warm => 1,
-    };
-    let index = interface + side;
-    let plate = &joint.plates[index];
-    let finish = plate.face(facing);
-    Ok(Face {
-        // Below a spot a solid of two conductivities spreads heat as one of √(k_in k_through) does.
-        conductivity: conductivity(plate, temperature, at.conductivity_of(joint, index))?
-            * plate.material.through_ratio().sqrt(),
-        roughness: finish.roughness.at(at.roughness[side]),
-        slope: finish.slope * finish.slope_factor.powf(at.slope[side]),
+/// The face at nominal.
+fn face(joint: &Joint, (interface, facing): (usize, Facing), side: &Side) -> Face {
+    let plate = &joint.plates[side.plate];
+    Face {
+        conductivity: side.conducting.at(0.0) * side.below_spots,
+        roughness: side.roughness.nominal,
+        slope: side.slope,
         youngs_modulus: plate.material.youngs_modulus.value,
         poisson: plate.material.poisson.value,
-        hardness: hardness((joint, interface), plate, at.hardness)?,
-        emissivity: joint.contact.emissivity[interface][side],
-        coating: finish.coating.as_ref().map(|coating| Layer {
+        hardness: side.hardness,
+        emissivity: joint.contact.emissivity[interface][side.plate - interface],
+        coating: plate.face(facing).coating.as_ref().map(|coating| Layer {
             thickness: coating.thickness,
             conductivity: coating.plating.conductivity.value,
             hardness: coating.plating.hardness.as_ref().map(|datum| datum.value),
             metal: coating.plating.metal,
         }),
-    })
+    }
 }
 
+/// Hardness of a plate at nominal, and what it may be multiplied by.
 fn hardness(
     (joint, interface): (&Joint, usize),
     plate: &Plate,
-    place: f64,
-) -> Result<Hardness, Failure> {
+) -> Result<(Hardness, [f64; 2]), Failure> {
     let Material {
         microhardness,
         hardness,
         ..
     } = &plate.material;
     match (microhardness, hardness) {
-        (Some([c1, c2]), _) => Ok(Hardness::Micro {
-            c1: c1 * between(MICROHARDNESS_FACTOR, place),
-            c2: *c2,
-        }),
-        (None, Some(datum)) => Ok(Hardness::Meyer(
-            datum.value * factor_at(datum, HARDNESS_OVER_BULK, place),
+        (Some([c1, c2]), _) => Ok((Hardness::Micro { c1: *c1, c2: *c2 }, MICROHARDNESS_FACTOR)),
+        (None, Some(datum)) => Ok((
+            Hardness::Meyer(datum.value),
+            bounds_of(datum, HARDNESS_OVER_BULK),
         )),
         // Where the spots carry nothing the hardness is not asked for.
-        (None, None) if !joint.is_bare(interface) => Ok(Hardness::Meyer(1e9)),
+        (None, None) if !joint.is_bare(interface) => Ok((Hardness::Meyer(1e9), [1.0; 2])),
         (None, None) => Err(Failure::NoHardness(plate.name.clone())),
     }
 }
@@ -151,13 +220,12 @@ fn local_points(measured: Option<&Measured>) -> Option<Vec<(f64, f64)>> {
     }
 }
 
-/// Value over nominal at a place between the bounds of a datum, or between default factors.
-fn factor_at(datum: &Datum, otherwise: [f64; 2], place: f64) -> f64 {
-    let bounds = match datum.range {
+/// Bounds of a datum over its value, or default factors.
+fn bounds_of(datum: &Datum, otherwise: [f64; 2]) -> [f64; 2] {
+    match datum.range {
         Some([low, high]) if low < high => [low / datum.value, high / datum.value],
         _ => otherwise,
-    };
-    between(bounds, place)
+    }
 }
 
 /// Factor at a place: the low end at −1, 1 at 0, the high end at +1.

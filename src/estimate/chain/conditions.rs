@@ -5,7 +5,7 @@ use crate::{
     estimate::{
         Chain, Failure, Realisation,
         chain::{Model, Warmth},
-        surfaces,
+        surfaces::{Conducting, Facets},
     },
     joint::MeasuredKind,
     resistance::Load,
@@ -86,6 +86,82 @@ impl Faces {
     }
 }
 
+/// What heat may meet in one case: everything looked up that no draw moves.
+#[derive(Clone, Debug)]
+pub(super) struct Outlook<'a> {
+    chain: &'a Chain<'a>,
+    case: usize,
+    facets: Vec<Facets>,
+    conducting: Vec<Conducting>,
+    shanks: Vec<f64>,
+}
+
+impl<'a> Outlook<'a> {
+    /// A case with plates of known temperature.
+    pub(super) fn of(chain: &'a Chain, case: usize, warmth: &Warmth) -> Result<Self, Failure> {
+        let joint = chain.joint();
+        let facets = (0..joint.interfaces())
+            .map(|index| {
+                let facets = Facets::of(joint, (index, warmth.interface(index)))?;
+                // Only a solved field knows how a layer is pressed.
+                let pressed = joint.filler(index).filter(|_| chain.knows_the_gap());
+                Ok(facets.pressed(pressed.and_then(|filler| filler.modulus)))
+            })
+            .collect::<Result<Vec<Facets>, Failure>>()?;
+        let plates = joint.plates.iter().enumerate();
+        let conducting = plates
+            .map(|(index, plate)| Conducting::of(plate, warmth.plate(index)))
+            .collect::<Result<Vec<Conducting>, Failure>>()?;
+        Ok(Self {
+            chain,
+            case,
+            facets,
+            conducting,
+            shanks: chain.shanks(warmth.bolts())?,
+        })
+    }
+
+    /// What heat meets at a realisation.
+    pub(super) fn at(&self, at: &Realisation) -> Conditions {
+        let mut found = Conditions {
+            forces: Vec::new(),
+            faces: Vec::new(),
+            temperature: self.chain.joint().service.cases[self.case].temperature,
+            conductivity: Vec::new(),
+            shanks: self.shanks.clone(),
+        };
+        self.put(at, &mut found);
+        found
+    }
+
+    /// Puts forces, faces and conductivities of a realisation in place of others of this case.
+    pub(super) fn put(&self, at: &Realisation, conditions: &mut Conditions) {
+        let chain = self.chain;
+        let joint = chain.joint();
+        let forces = &mut conditions.forces;
+        forces.clear();
+        for (fastener, group) in chain.groups() {
+            let force = group.service_force(joint, fastener, (self.case, at));
+            forces.extend(std::iter::repeat_n(force, fastener.places.len()));
+        }
+        let law = chain.force_law(forces, conditions.temperature);
+        conditions.faces.clear();
+        conditions.faces.extend(self.facets.iter().map(|facets| {
+            let interface = facets.at(joint, at);
+            let per_pascal = law.map(|law| law * interface.solid_factor);
+            Faces {
+                local: interface.into_local(),
+                per_pascal,
+            }
+        }));
+        conditions.conductivity.clear();
+        let plates = self.conducting.iter().enumerate();
+        conditions.conductivity.extend(
+            plates.map(|(plate, conducting)| conducting.at(at.conductivity_of(joint, plate))),
+        );
+    }
+}
+
 impl Conditions {
     /// The same without gas in the gaps; none where there is none.
     pub(super) fn without_gas(&self) -> Option<Self> {
@@ -125,38 +201,7 @@ impl Chain<'_> {
         warmth: &Warmth,
         at: &Realisation,
     ) -> Result<Conditions, Failure> {
-        let joint = self.joint();
-        let by_group: Vec<f64> = joint
-            .fasteners
-            .iter()
-            .zip(&self.groups)
-            .map(|(fastener, group)| group.service_force(joint, fastener, (case, at)))
-            .collect();
-        let forces: Vec<f64> = self.group_of.iter().map(|group| by_group[*group]).collect();
-        let temperature = joint.service.cases[case].temperature;
-        let law = self.force_law(&forces, temperature);
-        let faces = (0..joint.interfaces())
-            .map(|index| {
-                let place = (index, warmth.interface(index));
-                let mut interface = surfaces::interface(joint, place, at)?;
-                if self.knows_the_gap() {
-                    // Only a solved field knows how a layer is pressed.
-                    interface.filler_modulus =
-                        joint.filler(index).and_then(|filler| filler.modulus);
-                }
-                Ok(Faces {
-                    local: interface.prepare(),
-                    per_pascal: law.map(|law| law * interface.solid_factor),
-                })
-            })
-            .collect::<Result<Vec<Faces>, Failure>>()?;
-        Ok(Conditions {
-            forces,
-            faces,
-            temperature,
-            conductivity: surfaces::conductivities(joint, warmth, at)?,
-            shanks: self.shanks(warmth.bolts())?,
-        })
+        Ok(Outlook::of(self, case, warmth)?.at(at))
     }
 
     /// Measured W/K per bolt as a local conductance over pressure, W/(m² K Pa).

@@ -1,7 +1,9 @@
 //! The chain on a solved field: elastic contact and heat of the whole plates.
 
 mod columns;
+mod flat;
 mod level;
+mod plan;
 mod response;
 mod rings;
 mod round;
@@ -24,6 +26,7 @@ use crate::{
 use columns::Columns;
 use level::{Level, asked, coarser};
 use round::Round;
+pub(super) use plan::ElasticPlan;
 pub(super) use solver::Solved;
 use solver::{Factors, Solver};
 use spread::Spread;

@@ -37,6 +37,8 @@ const PROBES: [[f64; VARIABLES]; 4] = [
 /// Departure of a state from the nominal one: logarithms of ratios; the force is −∞ where none is
 /// left.
 pub(super) type Departure = [f64; VARIABLES];
+/// The departure of the nominal state.
+pub(super) const NOMINAL: Departure = [0.0; VARIABLES];
 
 /// Half widths of the design of a joint of so many plates.
 pub(super) fn steps(plates: usize) -> &'static [f64] {
@@ -167,7 +169,7 @@ fn weighted(values: &(impl Iterator<Item = (f64, f64)> + Clone)) -> f64 {
 ///
 /// What the joint adds is read as a logarithm where it is above zero in every solution, and as a
 /// share of source to sink where it is nothing within rounding.
-type Readings = [f64; 7];
+pub(super) type Readings = [f64; 7];
 
 /// The answers of one case over a range of force.
 ///
@@ -176,16 +178,16 @@ type Readings = [f64; 7];
 #[derive(Clone, Debug)]
 pub(super) struct Response {
     /// Half widths of the design, one for each variable besides the force.
-    steps: &'static [f64],
+    pub(super) steps: &'static [f64],
     /// Logarithms of the force over the nominal one, rising.
-    forces: Vec<f64>,
+    pub(super) forces: Vec<f64>,
     /// One for each force and reading.
-    surfaces: Vec<[Surface; 7]>,
+    pub(super) surfaces: Vec<[Surface; 7]>,
     /// The path when no force is left and the faces only lie on each other; none where no draw
     /// comes to that.
-    open: Option<Path>,
+    pub(super) open: Option<Path>,
     /// The nominal path on the level of the surfaces.
-    base: Path,
+    pub(super) base: Path,
     /// Largest error of source to sink at the probes, relative.
     pub(super) error: f64,
 }
@@ -278,7 +280,7 @@ impl Response {
 
     /// The path at a departure on the level of the surfaces themselves.
     pub(super) fn alone(&self, departure: &Departure) -> Path {
-        self.applied(&self.base, (&[0.0; VARIABLES], departure))
+        self.applied(&self.base, (&NOMINAL, departure))
     }
 
     /// A path of a finer solution at one departure, moved to another as the surfaces say.
@@ -314,7 +316,7 @@ impl Response {
     }
 
     /// Readings at a departure.
-    fn at(&self, departure: &Departure) -> Readings {
+    pub(super) fn at(&self, departure: &Departure) -> Readings {
         let [force, rest @ ..] = departure;
         let rest = &rest[..self.steps.len()];
         let last = self.forces.len() - 1;

@@ -45,14 +45,16 @@ impl Spread {
         &self,
         path: &Path,
         (from, to): (&Departure, &Departure),
-        [form, flatness]: [f64; 2],
+        places: [f64; 2],
     ) -> Path {
         let moved = self.response.applied(path, (from, to));
-        let bounds = self.bounds_at(to[0]);
-        with_form(
-            moved,
-            between(bounds.form, form) * between(bounds.bent, flatness),
-        )
+        with_form(moved, self.form(to[0], places))
+    }
+
+    /// Factor on what the joint adds at a force, by the places of the model form and of flatness.
+    pub(super) fn form(&self, force: f64, [form, flatness]: [f64; 2]) -> f64 {
+        let bounds = self.bounds_at(force);
+        between(bounds.form, form) * between(bounds.bent, flatness)
     }
 
     /// Bounds at a force: straight between those that are known, held beyond.
