@@ -5,6 +5,8 @@ mod check;
 mod console;
 mod draw;
 mod drawings;
+mod draws;
+mod drivers;
 mod estimate;
 mod explain;
 mod field;
@@ -57,6 +59,7 @@ enum Command {
     Check(check::Check),
     Estimate(estimate::Estimate),
     Torque(torque::Torque),
+    Drivers(drivers::Drivers),
     Draw(draw::Draw),
     List(list::List),
     Explain(explain::Explain),
@@ -109,6 +112,7 @@ impl Command {
             Self::Check(command) => command.run(console),
             Self::Estimate(command) => command.run(console),
             Self::Torque(command) => command.run(console),
+            Self::Drivers(command) => command.run(console),
             Self::Draw(command) => command.run(console),
             Self::List(command) => command.run(console),
             Self::Explain(command) => command.run(console),

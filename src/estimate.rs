@@ -254,6 +254,7 @@ fn case_result(chain: &Chain, case: usize, numerical_error: f64) -> Result<CaseR
         resistance_upper: path.resistance_upper,
         numerical_error,
         draw_error: None,
+        sampling: None,
         footprint: chain.footprint(),
         rise: joint.service.heat.map(|heat| Rise {
             source: Band::nominal(heat * path.source_to_sink),

@@ -13,6 +13,7 @@ mod plan;
 mod ramp;
 mod section;
 mod sheet;
+mod tornado;
 mod torque;
 mod warmth;
 
@@ -23,7 +24,7 @@ pub use plan::{
 pub use ramp::Ramp;
 pub use section::SectionPlot;
 
-use crate::estimate::TorqueSweep;
+use crate::{estimate::TorqueSweep, uncertainty::Ranking};
 
 /// The file a drawing becomes.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -49,6 +50,8 @@ pub enum Drawing {
     Cumulative(CumulativePlot),
     /// Resistance against torque.
     Torque(TorqueSweep),
+    /// What each input alone does to an answer.
+    Tornado(Box<Ranking>),
 }
 
 /// Why a drawing cannot be made.
@@ -94,6 +97,7 @@ fn sheet(drawing: &Drawing) -> Result<sheet::Sheet, FigureError> {
         Drawing::Section(plot) => section::draw(plot),
         Drawing::Cumulative(plot) => cumulative::draw(plot),
         Drawing::Torque(sweep) => torque::draw(sweep),
+        Drawing::Tornado(ranking) => tornado::draw(ranking),
     }
 }
 

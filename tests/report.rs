@@ -81,6 +81,7 @@ fn case(name: &'static str, sink_temperature: f64) -> CaseResult {
         resistance_upper: None,
         numerical_error: 0.0042,
         draw_error: None,
+        sampling: None,
         footprint: 0.0192,
         rise: Some(Rise {
             source: band(4.4, 5.5, 8.8),

@@ -12,9 +12,10 @@ use crate::{
     figures::{self, Drawing, Format},
     joint::{Joint, Medium},
     pressure::elastic::Failure as Contact,
-    uncertainty::{self, InMedium, SweepOptions},
+    uncertainty::{self, InMedium, Ranking, RankingOptions, SweepOptions, Verification},
     units::{self, Quantity},
 };
+use std::path::Path;
 
 /// A joint, the field it is to stand on, and who is told while it is solved.
 #[derive(Clone, Debug)]
@@ -48,6 +49,12 @@ pub fn torque_sweep(task: &Task, options: &SweepOptions) -> Result<TorqueSweep, 
     task.watched(|| uncertainty::sweep_along(&chain, options))
 }
 
+/// The inputs of the worst case ranked by their share in the spread of one answer.
+pub fn ranking(task: &Task, options: &RankingOptions) -> Result<Ranking, Trouble> {
+    let chain = task.chain()?;
+    task.watched(|| uncertainty::ranking(&chain, options))
+}
+
 /// Whether the rings of every bolt are asked for.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub enum Rings {
@@ -66,23 +73,37 @@ pub struct Estimated {
     pub rings: Vec<Vec<RingRow>>,
     /// The same joint in other media; empty unless asked for.
     pub media: Vec<InMedium>,
+    /// Draws of the first case solved beside the surfaces they are read from; none unless asked for,
+    /// and on the cone.
+    pub verified: Option<Verification>,
 }
 
-/// Low, nominal and high of a joint, with rings and media as asked for.
-pub fn estimate(
-    task: &Task,
-    options: &Options,
-    (rings, media): (Rings, &[Medium]),
-) -> Result<Estimated, Trouble> {
+/// What is asked for beside the estimate.
+#[derive(Clone, Copy, Debug)]
+pub struct Beside<'a> {
+    /// Rings of every bolt.
+    pub rings: Rings,
+    /// Other media.
+    pub media: &'a [Medium],
+    /// Draws to be solved.
+    pub verify: u32,
+}
+
+/// Low, nominal and high of a joint, with what is asked for beside them.
+pub fn estimate(task: &Task, options: &Options, beside: &Beside) -> Result<Estimated, Trouble> {
     let chain = task.chain()?;
     task.watched(|| {
         Ok(Estimated {
             estimate: uncertainty::along(&chain, options)?,
-            rings: match rings {
+            rings: match beside.rings {
                 Rings::Told => estimate::ring_tables(&chain)?,
                 Rings::Left => Vec::new(),
             },
-            media: uncertainty::in_media(&chain, media, options)?,
+            media: uncertainty::in_media(&chain, beside.media, options)?,
+            verified: match beside.verify {
+                0 => None,
+                draws => uncertainty::verification(&chain, 0, &Options { draws, ..*options })?,
+            },
         })
     })
 }
@@ -162,6 +183,23 @@ pub fn torque(text: &str) -> Result<f64, String> {
         Some(help) => format!("{}; {help}", fault.message),
         None => fault.message,
     })
+}
+
+/// The format of a figure by the ending of its file.
+pub fn format(path: &Path) -> Result<Format, Trouble> {
+    let ending = path
+        .extension()
+        .and_then(|ending| ending.to_str())
+        .unwrap_or("")
+        .to_ascii_lowercase();
+    match ending.as_str() {
+        "svg" => Ok(Format::Svg),
+        "png" => Ok(Format::Png),
+        _ => Err(Trouble::usage(
+            format!("`{}` ends in neither .svg nor .png", path.display()),
+            "the ending chooses the format of the figure",
+        )),
+    }
 }
 
 /// The name that was probably meant.

@@ -34,6 +34,16 @@ impl Band {
         }
     }
 
+    /// Every number times a positive factor.
+    #[must_use]
+    pub fn times(&self, factor: f64) -> Self {
+        Self {
+            low: self.low.map(|low| low * factor),
+            nominal: self.nominal * factor,
+            high: self.high.map(|high| high * factor),
+        }
+    }
+
     /// Conductance from resistance and back: the ends change places.
     #[must_use]
     pub fn inverse(&self) -> Self {
@@ -295,6 +305,8 @@ pub struct CaseResult {
     /// Largest error of the surface that the draws are read from, relative to source to sink; none
     /// where every draw is solved, and without draws.
     pub draw_error: Option<f64>,
+    /// How well the draws know the ends of the bands; none without draws, and with too few to tell.
+    pub sampling: Option<Sampling>,
     /// Area of the faying faces, m²; in a stack that of the first interface.
     pub footprint: f64,
     /// Temperature rises, when heat is stated.
@@ -305,6 +317,34 @@ pub struct CaseResult {
     pub requirement: Option<RequirementResult>,
     /// Share of the variance of the source-to-sink resistance by input, largest first; empty without draws.
     pub drivers: Vec<Driver>,
+}
+
+/// How well draws know the ends of the bands: standard errors of low and high, K/W.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Sampling {
+    /// Independent scramblings among which the draws are divided.
+    pub scrambles: usize,
+    /// Faying faces alone.
+    pub contact: [f64; 2],
+    /// Node to node.
+    pub node_to_node: [f64; 2],
+    /// Added by the joint.
+    pub added_by_joint: [f64; 2],
+    /// Source to sink.
+    pub source_to_sink: [f64; 2],
+    /// Source to sink after a fourth, a half and all of the draws.
+    pub course: Vec<Checkpoint>,
+}
+
+/// The ends of a band after so many draws, as they were drawn, K/W.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Checkpoint {
+    /// Draws so far.
+    pub draws: usize,
+    /// 5 % quantile.
+    pub low: f64,
+    /// 95 % quantile.
+    pub high: f64,
 }
 
 /// One input and its share of the spread.

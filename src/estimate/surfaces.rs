@@ -1,5 +1,7 @@
 //! The faces of every interface at one temperature and one realisation, ready for the laws.
 
+use serde_json::{Value, json};
+
 use crate::{
     catalog::{Datum, Material},
     conductance::{Face, Hardness, Interface, Layer, gas},
@@ -41,6 +43,11 @@ impl Conducting {
                 .map_err(|fault| Failure::Cold(fault.to_string()))?,
             bounds: bounds_of(&plate.material.conductivity, CONDUCTIVITY_FACTOR),
         })
+    }
+
+    /// Value and bounds over it, as data.
+    pub fn table(&self) -> Value {
+        json!({ "value": self.value, "bounds": self.bounds })
     }
 
     /// At a place of its range, W/(m K); in its plane where that through the plate differs.
@@ -108,6 +115,33 @@ impl Facets {
             solid: measured.map_or(LAW_FACTOR, |measured| measured.factor),
             filler: filler.map_or(1.0, |filler| filler.factor),
         })
+    }
+
+    /// Both faces with what they may be, and the scatter of the law, as data.
+    pub fn table(&self) -> Value {
+        let sides = self
+            .sides
+            .iter()
+            .zip(&self.nominal.faces)
+            .map(|(side, face)| {
+                let Bounds { low, nominal, high } = side.roughness;
+                let hardness = match side.hardness {
+                    Hardness::Meyer(value) => json!({ "meyer": value }),
+                    Hardness::Micro { c1, c2 } => json!({ "c1": c1, "c2": c2 }),
+                };
+                json!({
+                    "conductivity": side.conducting.table(),
+                    "below_spots": side.below_spots,
+                    "roughness": [low, nominal, high],
+                    "slope": side.slope,
+                    "slope_factor": side.slope_factor,
+                    "hardness": hardness,
+                    "hardness_bounds": side.hardness_bounds,
+                    "youngs_modulus": face.youngs_modulus,
+                    "poisson": face.poisson,
+                })
+            });
+        json!({ "sides": sides.collect::<Vec<Value>>(), "law_factor": self.solid })
     }
 
     /// The same where the pressure on the layer itself is known, with pressure over true strain, Pa.

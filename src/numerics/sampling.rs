@@ -1,6 +1,9 @@
 //! Evenly spread random points, and quantiles of what they give.
 
 mod directions;
+mod tail;
+
+pub use tail::{Missed, REACH, Tail};
 
 use directions::{DIMENSIONS, JOE_KUO};
 
@@ -57,7 +60,10 @@ impl Sobol {
 
     /// One of many independent scramblings that belong to one seed.
     pub fn replicate(dimensions: usize, seed: u64, replicate: usize) -> Self {
-        Self::new(dimensions, mixed(seed).wrapping_add(mixed(!(replicate as u64))))
+        Self::new(
+            dimensions,
+            mixed(seed).wrapping_add(mixed(!(replicate as u64))),
+        )
     }
 
     /// The sequence as Sobol left it: starts at the origin, point for point that of SciPy.

@@ -4,11 +4,11 @@ use crate::{
     diagnostic::{Assumption, Caution},
     estimate::{
         Band, BoltResult, CaseResult, Estimate, InterfaceResult, Met, PlaneResult,
-        RequirementResult, RingRow, TorqueSweep,
+        RequirementResult, RingRow, Sampling, TorqueSweep,
     },
     joint::{Limit, Plane, RequirementKind},
     report::{media::vacuum_over, number::inverse},
-    uncertainty::InMedium,
+    uncertainty::{InMedium, Verification},
 };
 use serde_json::{Map, Value, json};
 
@@ -100,6 +100,7 @@ fn case(case: &CaseResult) -> Map<String, Value> {
         ),
         ("numerical_error", json!(case.numerical_error)),
         ("draw_error", json!(case.draw_error)),
+        ("sampling", case.sampling.as_ref().map_or(Value::Null, sampling)),
         ("rise", rise(case)),
         ("temperatures", temperatures::temperatures(case)),
         (
@@ -119,6 +120,29 @@ fn case(case: &CaseResult) -> Map<String, Value> {
         object.insert(key.to_owned(), value);
     }
     object
+}
+
+/// Draws solved beside their surfaces; nothing on the cone.
+pub fn verification(found: Option<&Verification>) -> Value {
+    found.map_or(Value::Null, |found| {
+        json!({ "draws": found.draws, "largest_error": found.largest, "mean_error": found.mean })
+    })
+}
+
+/// Standard errors of low and high, K/W, and source to sink on the way to all draws.
+fn sampling(sampling: &Sampling) -> Value {
+    json!({
+        "scrambles": sampling.scrambles,
+        "standard_error": {
+            "contact": sampling.contact,
+            "node_to_node": sampling.node_to_node,
+            "added_by_joint": sampling.added_by_joint,
+            "source_to_sink": sampling.source_to_sink,
+        },
+        "source_to_sink": sampling.course.iter().map(|point| {
+            json!({ "draws": point.draws, "low": point.low, "high": point.high })
+        }).collect::<Vec<Value>>(),
+    })
 }
 
 fn bolt(bolt: &BoltResult) -> Value {

@@ -10,6 +10,7 @@ use crate::{
         number::{band, cut, optional, percent, plain, wrapped},
         table::{Side, aligned},
     },
+    uncertainty::Verification,
 };
 use anstyle::{AnsiColor, Style};
 use std::fmt::Write;
@@ -88,8 +89,22 @@ fn heading(estimate: &Estimate) -> String {
     text
 }
 
+/// Draws solved beside the surfaces that all draws are read from.
+pub fn verification(found: Option<&Verification>) -> String {
+    let line = match found {
+        Some(found) => format!(
+            "surfaces of the draws beside {} draws solved one by one: source to sink off by {} at most, {} on average",
+            found.draws,
+            percent(found.largest),
+            percent(found.mean)
+        ),
+        None => "every draw is solved; there are no surfaces to verify".to_owned(),
+    };
+    format!("\n{}\n", wrapped(&line, WIDTH, 2))
+}
+
 /// Wraps behind a label of fixed width, which `wrapped` alone would close up.
-fn wrapped_after(line: &str, label: usize) -> String {
+pub(super) fn wrapped_after(line: &str, label: usize) -> String {
     let head: String = line.chars().take(label).collect();
     let rest: String = line.chars().skip(label).collect();
     let body = wrapped(&rest, WIDTH - label, 0);

@@ -5,7 +5,7 @@ use crate::{
     joint::{Joint, Limit, Plane, RequirementKind, Tightening},
 };
 
-use super::{draws, minimum::minimum};
+use super::{Answer, draws, minimum::minimum};
 
 /// Which torques to try.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -22,6 +22,8 @@ pub struct SweepOptions {
     pub chain: Options,
 }
 
+/// What is told of every torque.
+const SWEPT: [Answer; 3] = [Answer::SourceToSink, Answer::Contact, Answer::AddedByJoint];
 /// Steps that are sooner solved one by one than through a table over the force.
 const FEW_STEPS: usize = 4;
 /// Share of the stated torque at which a sweep starts unless told otherwise.
@@ -118,7 +120,7 @@ fn best_of(points: &[TorquePoint], required: Option<(f64, Limit)>) -> Option<f64
 
 /// The case in which the joint stands worst: of most resistance, or of least where the requirement
 /// asks for at least so much.
-fn worst_case(chain: &Chain) -> Result<usize, Failure> {
+pub(super) fn worst_case(chain: &Chain) -> Result<usize, Failure> {
     let cases = chain.joint().service.cases.len();
     let resistances = (0..cases)
         .map(|case| {
@@ -157,19 +159,18 @@ fn point(
     let strength = chain.strength(options.group);
     let draws = match options.chain.draws {
         0 => None,
-        _ => Some(draws(&chain, case, &options.chain)?),
+        _ => Some(draws(&chain, (case, &SWEPT), &options.chain)?),
     };
-    let band = |nominal: f64, of: fn(&super::Draws, f64) -> estimate::Band| {
-        draws
-            .as_ref()
-            .map_or(estimate::Band::nominal(nominal), |draws| of(draws, nominal))
+    let band = |answer: Answer, nominal: f64| {
+        let drawn = draws.as_ref().map(|draws| draws.band(answer, nominal));
+        drawn.unwrap_or(estimate::Band::nominal(nominal))
     };
     Ok(TorquePoint {
         torque,
         force: chain.force(options.group),
-        source_to_sink: band(source_to_sink, super::Draws::source_to_sink),
-        contact: band(contact, super::Draws::contact),
-        added_by_joint: band(added, super::Draws::added_by_joint),
+        source_to_sink: band(Answer::SourceToSink, source_to_sink),
+        contact: band(Answer::Contact, contact),
+        added_by_joint: band(Answer::AddedByJoint, added),
         strength_use: strength.equivalent,
         passes: strength.passes,
     })

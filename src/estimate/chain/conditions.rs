@@ -1,10 +1,13 @@
 //! What heat meets in a joint at one realisation: forces, faces, conductivities.
 
+use serde_json::{Value, json};
+
 use crate::{
     conductance::{Curve, Local},
     estimate::{
         Chain, Failure, Realisation,
         chain::{Model, Warmth},
+        forces::Group,
         surfaces::{Conducting, Facets},
     },
     joint::MeasuredKind,
@@ -118,6 +121,26 @@ impl<'a> Outlook<'a> {
             facets,
             conducting,
             shanks: chain.shanks(warmth.bolts())?,
+        })
+    }
+
+    /// What moves with a draw, as data: faces, plates, and the losses of every group at the whole
+    /// share of the guide values.
+    pub(super) fn tables(&self) -> Value {
+        let joint = self.chain.joint();
+        let losses = |(_, group): (_, &Group)| {
+            let losses = group.losses(joint, self.case, 1.0);
+            json!({
+                "settling": losses.settling,
+                "relaxation": losses.relaxation,
+                "temperature": losses.temperature,
+            })
+        };
+        let plates = self.conducting.iter().map(Conducting::table);
+        json!({
+            "faces": self.facets.iter().map(Facets::table).collect::<Vec<Value>>(),
+            "plates": plates.collect::<Vec<Value>>(),
+            "losses": self.chain.groups().map(losses).collect::<Vec<Value>>(),
         })
     }
 

@@ -1,5 +1,7 @@
 //! Many draws of one case: the chain with everything worked out that no draw changes.
 
+use serde_json::{Value, json};
+
 use crate::estimate::{
     Chain, Failure, Realisation,
     chain::{
@@ -59,13 +61,21 @@ enum Field<'a> {
 pub struct Workspace(Conditions);
 
 impl Chain<'_> {
+    /// Source to sink of a draw as it is read from the surfaces of a solved field, and as solved for
+    /// these very inputs on the level of the surfaces, K/W; form and flatness, which stand on bounds,
+    /// are left at nominal. None on the cone, which solves every draw, and where hardly any force is
+    /// left.
+    pub fn draw_beside(&self, case: usize, at: &Realisation) -> Result<Option<[f64; 2]>, Failure> {
+        match &self.model {
+            Model::Cone(_) => Ok(None),
+            Model::Elastic(model) => model.beside(self, case, at),
+        }
+    }
+
     /// The plan of the draws of a case; on a solved field this works out their surfaces, once.
     pub fn draw_plan(&self, case: usize) -> Result<DrawPlan<'_>, Failure> {
         let (outlook, field) = match &self.model {
-            Model::Cone(_) => (
-                Outlook::of(self, case, &self.cold(case))?,
-                Field::Cone,
-            ),
+            Model::Cone(_) => (Outlook::of(self, case, &self.cold(case))?, Field::Cone),
             Model::Elastic(model) => {
                 let (outlook, plan) = model.plan(self, case)?;
                 (outlook, Field::Elastic(Box::new(plan)))
@@ -92,9 +102,7 @@ impl DrawPlan<'_> {
         self.outlook.put(at, conditions);
         let found = match (&self.field, &self.chain.model) {
             (Field::Elastic(plan), _) => plan.drawn(conditions, at),
-            (Field::Cone, Model::Cone(model)) => {
-                Drawn::of(&model.path(self.case, conditions, at))
-            }
+            (Field::Cone, Model::Cone(model)) => Drawn::of(&model.path(self.case, conditions, at)),
             (Field::Cone, Model::Elastic(_)) => unreachable!("the plan is of this chain"),
         };
         if found.is_sound() {
@@ -107,7 +115,34 @@ impl DrawPlan<'_> {
     }
 }
 
+impl DrawPlan<'_> {
+    /// What a draw is read from on a solved field, as data: for programs that evaluate the same
+    /// draws; nothing for the cone.
+    pub fn tables(&self) -> Value {
+        match &self.field {
+            Field::Cone => Value::Null,
+            Field::Elastic(plan) => json!({
+                "meets": self.outlook.tables(),
+                "field": plan.tables(),
+            }),
+        }
+    }
+}
+
 impl Drawn {
+    /// All, in the order of the fields.
+    pub fn all(&self) -> [f64; 7] {
+        [
+            self.contact,
+            self.node_to_node,
+            self.added_by_joint,
+            self.source_to_sink,
+            self.perfect_contact,
+            self.hottest,
+            self.interface_drop,
+        ]
+    }
+
     /// Whether every resistance is a number that can be: means of plates may stand either way round.
     fn is_sound(&self) -> bool {
         let signed = [
@@ -118,7 +153,9 @@ impl Drawn {
         ];
         let unsigned = [self.contact, self.source_to_sink, self.perfect_contact];
         signed.iter().all(|value| value.is_finite())
-            && unsigned.iter().all(|value| value.is_finite() && *value > 0.0)
+            && unsigned
+                .iter()
+                .all(|value| value.is_finite() && *value > 0.0)
     }
 
     /// With the model form applied to what the joint adds.

@@ -25,8 +25,8 @@ use crate::{
 
 use columns::Columns;
 use level::{Level, asked, coarser};
-use round::Round;
 pub(super) use plan::ElasticPlan;
+use round::Round;
 pub(super) use solver::Solved;
 use solver::{Factors, Solver};
 use spread::Spread;

@@ -1,10 +1,10 @@
 //! The thermal part of the report: results with their planes, verdict, cases, drivers.
 
 use crate::{
-    estimate::{Band, CaseResult, Driver, Estimate, Met, RequirementResult},
+    estimate::{Band, CaseResult, Checkpoint, Driver, Estimate, Met, RequirementResult, Sampling},
     joint::{Limit, Plane, RequirementKind},
     report::{
-        number::{band, four, inverse, optional, spread, wrapped},
+        number::{band, four, inverse, optional, percent, spread, wrapped},
         table::{Side, aligned},
         text::{WIDTH, wrapped_after},
     },
@@ -72,7 +72,24 @@ pub fn results(case: &CaseResult) -> String {
     }
     text.push_str(&scaled(case));
     text.push_str(&bounds(case));
+    text.push_str(&case.sampling.as_ref().map_or_else(String::new, sampling));
     text
+}
+
+/// How the ends of source to sink settle with the draws, with one standard error.
+fn sampling(sampling: &Sampling) -> String {
+    let end = |of: fn(&Checkpoint) -> f64, error: f64| {
+        let values: Vec<f64> = sampling.course.iter().map(of).collect();
+        let last = values.last().copied().unwrap_or(f64::NAN);
+        let values: Vec<String> = values.into_iter().map(four).collect();
+        format!("{} ± {}", values.join(", "), percent(error / last))
+    };
+    let line = format!(
+        "source to sink after ¼, ½, all draws: low {}; high {}",
+        end(|point| point.low, sampling.source_to_sink[0]),
+        end(|point| point.high, sampling.source_to_sink[1]),
+    );
+    format!("{}\n", wrapped(&line, WIDTH, 2))
 }
 
 /// The conductances per area and per bolt, for those who must compare.

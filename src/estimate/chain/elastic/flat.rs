@@ -1,5 +1,7 @@
 //! The surfaces of a response laid out for many draws: every reading side by side, no allocation.
 
+use serde_json::{Value, json};
+
 use crate::estimate::chain::elastic::response::{Departure, Readings, Response};
 
 /// Readings side by side, one more than there are: an even number fills the registers.
@@ -52,6 +54,17 @@ impl Flat {
         Self { nodes, twist }
     }
 
+    /// Coefficients node by node, as data.
+    pub(super) fn tables(&self) -> Value {
+        let nodes = self.nodes.iter();
+        json!({
+            "nodes": nodes.map(|node| {
+                json!({ "force": node.force, "centre": node.centre, "along": node.along })
+            }).collect::<Vec<Value>>(),
+            "twist": self.twist,
+        })
+    }
+
     /// Readings at a departure.
     pub(super) fn at(&self, departure: &Departure) -> Readings {
         let [force, rest @ ..] = departure;
@@ -59,7 +72,8 @@ impl Flat {
         let force = force.clamp(self.nodes[0].force, self.nodes[last].force);
         let above = self.nodes.partition_point(|node| node.force < force);
         let nearest = if above > 0
-            && (above > last || force - self.nodes[above - 1].force <= self.nodes[above].force - force)
+            && (above > last
+                || force - self.nodes[above - 1].force <= self.nodes[above].force - force)
         {
             above - 1
         } else {

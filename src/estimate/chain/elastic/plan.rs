@@ -1,12 +1,22 @@
 //! The draws of one case on a solved field, compiled: surfaces, nominal path, bounds.
 
+use serde_json::{Value, json};
+
 use crate::{
     estimate::{
         Chain, Failure, Realisation,
         chain::{
             conditions::{Conditions, Outlook},
             draw::Drawn,
-            elastic::{ElasticModel, flat::Flat, response::{self, Readings}, spread::Spread},
+            elastic::{
+                ElasticModel,
+                flat::Flat,
+                level::GROUND,
+                response::{self, Readings},
+                solver::Factors,
+                spread::Spread,
+                variant::Variant,
+            },
         },
     },
     resistance::Path,
@@ -53,6 +63,28 @@ impl ElasticModel {
     }
 }
 
+impl ElasticModel {
+    /// Source to sink of a draw, form and flatness left out, on the level of the surfaces: as read
+    /// from them, and solved. None where hardly any force is left.
+    pub(in crate::estimate::chain) fn beside(
+        &self,
+        chain: &Chain,
+        index: usize,
+        at: &Realisation,
+    ) -> Result<Option<[f64; 2]>, Failure> {
+        let spread = self.spread_of(chain, index)?;
+        let conditions = chain.conditions(index, at)?;
+        let to = spread.gauge.departure(&conditions);
+        if to[0] < response::LEAST_FORCE.ln() {
+            return Ok(None);
+        }
+        let task = (GROUND, Variant::Stated);
+        let solved = self.solved(chain, task, (&conditions, &Factors::NONE))?;
+        let told = spread.response.alone(&to).source_to_sink;
+        Ok(Some([told, solved.path().source_to_sink]))
+    }
+}
+
 impl ElasticPlan<'_> {
     /// The resistances of a draw under its conditions: those of `Spread::moved`, or of the surfaces
     /// alone where the nominal state is open.
@@ -93,6 +125,19 @@ impl ElasticPlan<'_> {
             interface_drop: share(from.interface_drop, interface),
             hottest: share(from.hottest, hottest),
         }
+    }
+}
+
+impl ElasticPlan<'_> {
+    /// What the plan reads from, as data.
+    pub(in crate::estimate::chain) fn tables(&self) -> Value {
+        json!({
+            "from": self.from.all(),
+            "read": self.read,
+            "surfaces": self.flat.tables(),
+            "gauge": self.spread.gauge.tables(),
+            "bounds": self.spread.bounds_tables(),
+        })
     }
 }
 

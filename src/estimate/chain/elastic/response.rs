@@ -1,5 +1,7 @@
 //! How the resistances answer to force, faces and conductivities: surfaces for the draws.
 
+use serde_json::{Value, json};
+
 use crate::{
     estimate::chain::{
         conditions::Conditions,
@@ -87,6 +89,22 @@ impl Gauge {
             faces: faces.collect(),
             conductivity: conditions.conductivity.clone(),
         }
+    }
+
+    /// The nominal state as data.
+    pub(super) fn tables(&self) -> Value {
+        let faces = self.faces.iter();
+        json!({
+            "force": self.force,
+            "conductivity": self.conductivity,
+            "faces": faces.map(|face| json!({
+                "pressure": face.met.pressure,
+                "gap": face.met.gap,
+                "shares": face.met.shares,
+                "touching": face.touching,
+                "parted": face.parted,
+            })).collect::<Vec<Value>>(),
+        })
     }
 
     /// Nominal force of all bolts, N.

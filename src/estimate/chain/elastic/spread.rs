@@ -1,6 +1,7 @@
 //! How the nominal path moves with a draw: response, model form and flatness over the force.
 
 use rayon::prelude::*;
+use serde_json::{Value, json};
 
 use crate::{
     estimate::{
@@ -55,6 +56,14 @@ impl Spread {
     pub(super) fn form(&self, force: f64, [form, flatness]: [f64; 2]) -> f64 {
         let bounds = self.bounds_at(force);
         between(bounds.form, form) * between(bounds.bent, flatness)
+    }
+
+    /// The bounds as data.
+    pub(super) fn bounds_tables(&self) -> Vec<Value> {
+        let bounds = self.bounds.iter();
+        bounds
+            .map(|each| json!({ "force": each.force, "form": each.form, "bent": each.bent }))
+            .collect()
     }
 
     /// Bounds at a force: straight between those that are known, held beyond.
