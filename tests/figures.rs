@@ -2,6 +2,8 @@
 
 #[path = "figures/heat.rs"]
 mod heat;
+#[path = "figures/tornado.rs"]
+mod tornado;
 
 use ringsum::{
     estimate::{Band, FieldMap, TorquePoint, TorqueSweep},
@@ -186,6 +188,7 @@ fn every_drawing() -> Vec<Drawing> {
         heat::flux(),
         Drawing::Faces(Box::new(heat::faces(Some(22.0)))),
         Drawing::Section(Box::new(heat::section(Some(22.0)))),
+        Drawing::Tornado(Box::new(tornado::ranking())),
     ]
 }
 
@@ -464,6 +467,10 @@ fn hostile_titles_stay_text() {
             Drawing::Torque(sweep) => {
                 sweep.title = HOSTILE.into();
                 sweep.group = "x".repeat(5000);
+            }
+            Drawing::Tornado(ranking) => {
+                ranking.title = HOSTILE.repeat(40);
+                ranking.inputs[0].input = HOSTILE;
             }
         }
         let document = svg(&drawing).unwrap();

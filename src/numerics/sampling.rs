@@ -133,8 +133,10 @@ impl Walk<'_> {
         }
         self.index = self.index.wrapping_add(1);
         let column = self.index.trailing_zeros() as usize;
-        if let Some(column) = self.sobol.columns.get(column) {
-            flip(&mut self.digits, column);
+        match self.sobol.columns.get(column) {
+            Some(column) => flip(&mut self.digits, column),
+            // Past the last point stands the first.
+            None => self.digits.fill(0),
         }
     }
 }
