@@ -2,14 +2,15 @@
 //!
 //! Whole joints are drawn with a scrambled Sobol sequence from a fixed seed and run through the
 //! chain; quantiles are read from the outcomes. Bolts of one joint share one friction (one lot of
-//! lubricant), which is the unfavourable reading: independent bolts would average out.
+//! lubricant) unless the file says otherwise: independent bolts average out.
 
 mod inputs;
 mod media;
 mod minimum;
 mod sweep;
+mod worst;
 
-pub use inputs::{Input, inputs};
+pub use inputs::{Input, Moves, inputs};
 pub use media::{InMedium, in_media};
 pub use sweep::{SweepOptions, sweep_along, torque_sweep};
 
@@ -40,6 +41,7 @@ pub fn along(chain: &Chain, options: &Options) -> Result<Estimate, Failure> {
         for case in 0..found.cases.len() {
             let draws = draws(chain, case, options)?;
             apply(&draws, joint, &mut found.cases[case]);
+            found.cases[case].worst = worst::worst(chain, case, &draws.inputs);
             found.cases[case].draw_error = chain.draw_error(case);
         }
     }
@@ -150,7 +152,7 @@ impl Draws {
             .iter()
             .map(|drawn| drawn.source_to_sink.ln())
             .collect();
-        let mut drivers: Vec<Driver> = self
+        let drivers = self
             .inputs
             .iter()
             .enumerate()
@@ -162,11 +164,23 @@ impl Draws {
                 )
                 .powi(2),
                 remedy: input.remedy,
-            })
-            .collect();
+            });
+        let mut drivers = by_name(drivers.collect());
         drivers.sort_by(|one, other| other.share.total_cmp(&one.share));
         drivers
     }
+}
+
+/// Inputs of one name as one: independent of each other, their shares add.
+fn by_name(all: Vec<Driver>) -> Vec<Driver> {
+    let mut found: Vec<Driver> = Vec::new();
+    for driver in all {
+        match found.iter_mut().find(|known| known.input == driver.input) {
+            Some(known) => known.share += driver.share,
+            None => found.push(driver),
+        }
+    }
+    found
 }
 
 /// Pearson correlation; 0 where either side does not move or is not finite.

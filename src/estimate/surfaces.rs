@@ -5,6 +5,7 @@ use crate::{
     conductance::{Face, Hardness, Interface, Layer, gas},
     estimate::{Failure, Realisation, chain::Warmth},
     joint::{Facing, Joint, Measured, MeasuredKind, Medium, Plate},
+    numerics::distribution::{Shape, deviations},
 };
 
 /// Hardness over its catalogue value when the catalogue knows no range.
@@ -16,11 +17,6 @@ const HARDNESS_OVER_BULK: [f64; 2] = [0.9, 1.6];
 const MICROHARDNESS_FACTOR: [f64; 2] = [0.8, 1.2];
 /// Conductivity over its catalogue value when the catalogue knows no range (judgement, ±5 %).
 const CONDUCTIVITY_FACTOR: [f64; 2] = [0.95, 1.05];
-/// Scatter of the solid-spot laws about measured joints of known surfaces, one standard deviation.
-///
-/// 12.6 % is the published figure for 61 coated points; 10–20 % for bare bead-blasted faces is
-/// from memory; 15 % lies between.
-const LAW_FACTOR: f64 = 1.15;
 /// Scatter of the gas parameter through the accommodation, one standard deviation (judgement).
 const GAS_FACTOR: f64 = 1.2;
 
@@ -73,16 +69,16 @@ pub fn interface(
                 gas,
                 *pressure,
                 temperature,
-                GAS_FACTOR.powf(at.gas),
+                GAS_FACTOR.powf(deviations(at.gas)),
             )),
         },
         temperature,
-        filler: filler.map(|filler| filler.kind.clone()),
+        filler: joint.filler_at(index, &at.stated),
         measured: local_points(measured),
         solid_factor: measured
-            .map_or(LAW_FACTOR, |measured| measured.factor)
-            .powf(at.law),
-        filler_factor: filler.map_or(1.0, |filler| filler.factor.powf(at.filler)),
+            .map_or(joint.contact.law_factor, |measured| measured.factor)
+            .powf(deviations(at.law)),
+        filler_factor: filler.map_or(1.0, |filler| filler.factor.powf(deviations(at.filler))),
         filler_modulus: None,
     })
 }
@@ -105,11 +101,11 @@ fn face(
         conductivity: conductivity(plate, temperature, at.conductivity_of(joint, index))?
             * plate.material.through_ratio().sqrt(),
         roughness: finish.roughness.at(at.roughness[side]),
-        slope: finish.slope * finish.slope_factor.powf(at.slope[side]),
+        slope: finish.slope_at(at.slope[side]),
         youngs_modulus: plate.material.youngs_modulus.value,
         poisson: plate.material.poisson.value,
         hardness: hardness((joint, interface), plate, at.hardness)?,
-        emissivity: joint.contact.emissivity[interface][side],
+        emissivity: joint.emissivity_at((interface, side), &at.stated),
         coating: finish.coating.as_ref().map(|coating| Layer {
             thickness: coating.thickness,
             conductivity: coating.plating.conductivity.value,
@@ -126,12 +122,17 @@ fn hardness(
 ) -> Result<Hardness, Failure> {
     let Material {
         microhardness,
+        microhardness_spread,
         hardness,
         ..
     } = &plate.material;
     match (microhardness, hardness) {
         (Some([c1, c2]), _) => Ok(Hardness::Micro {
-            c1: c1 * between(MICROHARDNESS_FACTOR, place),
+            c1: c1
+                * microhardness_spread.as_ref().map_or_else(
+                    || between(MICROHARDNESS_FACTOR, place),
+                    |datum| factor_at(datum, MICROHARDNESS_FACTOR, place),
+                ),
             c2: *c2,
         }),
         (None, Some(datum)) => Ok(Hardness::Meyer(
@@ -153,18 +154,16 @@ fn local_points(measured: Option<&Measured>) -> Option<Vec<(f64, f64)>> {
 
 /// Value over nominal at a place between the bounds of a datum, or between default factors.
 fn factor_at(datum: &Datum, otherwise: [f64; 2], place: f64) -> f64 {
-    let bounds = match datum.range {
-        Some([low, high]) if low < high => [low / datum.value, high / datum.value],
-        _ => otherwise,
-    };
-    between(bounds, place)
+    match datum.range {
+        Some([low, high]) if low < high => {
+            let ends = [low / datum.value, 1.0, high / datum.value];
+            datum.shape.at(ends, place)
+        }
+        _ => between(otherwise, place),
+    }
 }
 
 /// Factor at a place: the low end at −1, 1 at 0, the high end at +1.
 fn between([low, high]: [f64; 2], place: f64) -> f64 {
-    if place < 0.0 {
-        1.0 + place * (1.0 - low)
-    } else {
-        1.0 + place * (high - 1.0)
-    }
+    Shape::Uniform.at([low, 1.0, high], place)
 }

@@ -126,13 +126,7 @@ impl Chain<'_> {
         at: &Realisation,
     ) -> Result<Conditions, Failure> {
         let joint = self.joint();
-        let by_group: Vec<f64> = joint
-            .fasteners
-            .iter()
-            .zip(&self.groups)
-            .map(|(fastener, group)| group.service_force(joint, fastener, (case, at)))
-            .collect();
-        let forces: Vec<f64> = self.group_of.iter().map(|group| by_group[*group]).collect();
+        let forces = self.service_forces(case, at);
         let temperature = joint.service.cases[case].temperature;
         let law = self.force_law(&forces, temperature);
         let faces = (0..joint.interfaces())
@@ -157,6 +151,25 @@ impl Chain<'_> {
             conductivity: surfaces::conductivities(joint, warmth, at)?,
             shanks: self.shanks(warmth.bolts())?,
         })
+    }
+
+    /// Clamp force of every bolt in service at one realisation, N.
+    fn service_forces(&self, case: usize, at: &Realisation) -> Vec<f64> {
+        let joint = self.joint();
+        let force = |group: usize, bolt: Option<usize>| {
+            let fastener = &joint.fasteners[group];
+            self.groups[group].service_force((joint, fastener), bolt, (case, at))
+        };
+        if at.bolts.is_empty() {
+            let by_group: Vec<f64> = (0..self.groups.len())
+                .map(|group| force(group, None))
+                .collect();
+            return self.group_of.iter().map(|group| by_group[*group]).collect();
+        }
+        let bolts = self.group_of.iter().enumerate();
+        bolts
+            .map(|(bolt, group)| force(*group, Some(bolt)))
+            .collect()
     }
 
     /// Measured W/K per bolt as a local conductance over pressure, W/(m² K Pa).
