@@ -41,6 +41,7 @@ mod stacking;
 mod syntax;
 mod tightening;
 mod tree;
+mod uncertainty;
 mod walk;
 
 use toml::de::DeTable;
@@ -240,6 +241,8 @@ fn assembled(file: &Record, tables: &mut Tables<'_>, collector: &mut Collector) 
     let contact = contact::read(file, &plates, collector);
     let fasteners = fasteners::read(file, (&plates, &own), collector);
     let losses = contact::losses(file, collector);
+    let bolts_scatter = uncertainty::bolts(file, collector);
+    let names: Vec<String> = plates.iter().map(|plate| plate.name.clone()).collect();
     let plates: Option<Vec<Plate>> = plates
         .into_iter()
         .map(plates::PlateDraft::finished)
@@ -255,6 +258,8 @@ fn assembled(file: &Record, tables: &mut Tables<'_>, collector: &mut Collector) 
         fillers: fillers?,
         measured: measured?,
         losses: losses?,
+        uncertain: uncertainty::stated(file, &names),
+        bolts_scatter: bolts_scatter?,
         assumptions: Vec::new(),
     };
     cold::check(&joint, file, collector);

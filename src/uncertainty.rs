@@ -2,7 +2,7 @@
 //!
 //! Whole joints are drawn with a scrambled Sobol sequence from a fixed seed and run through the
 //! chain; quantiles are read from the outcomes. Bolts of one joint share one friction (one lot of
-//! lubricant), which is the unfavourable reading: independent bolts would average out.
+//! lubricant) unless the file says otherwise: independent bolts average out.
 
 mod answer;
 mod draws;
@@ -15,16 +15,16 @@ mod remedies;
 mod shares;
 mod sweep;
 mod verification;
+mod worst;
 
 pub use answer::Answer;
+pub use draws::{Draws, draws};
 pub use indices::{Bases, FEWEST_BASES, Index, Share, indices};
-pub use inputs::{Input, inputs};
+pub use inputs::{Input, Moves, inputs};
 pub use media::{InMedium, in_media};
 pub use ranking::{Ranked, Ranking, RankingOptions, Scale, Target, ranking};
 pub use sweep::{SweepOptions, sweep_along, torque_sweep};
 pub use verification::{Verification, verification};
-
-pub use draws::{Draws, draws};
 
 use crate::{
     estimate::{
@@ -50,6 +50,7 @@ pub fn along(chain: &Chain, options: &Options) -> Result<Estimate, Failure> {
         for case in 0..found.cases.len() {
             let draws = draws(chain, (case, &Answer::ALL), options)?;
             apply(&draws, joint, &mut found.cases[case]);
+            found.cases[case].worst = worst::worst(&chain.draw_plan(case)?, &draws.inputs);
             found.cases[case].draw_error = chain.draw_error(case);
         }
     }

@@ -8,7 +8,7 @@ use ringsum::{
     estimate::{
         Band, BoltResult, CaseResult, ConeBeside, Driver, Estimate, Flatness, InterfaceResult, Met,
         PlaneResult, PressureResult, RequirementResult, Results, RingRow, Rise, SolvedField,
-        SolverHealth, TorquePoint, TorqueSweep,
+        SolverHealth, TorquePoint, TorqueSweep, Worst,
     },
     joint::{Limit, Plane, RequirementKind},
     report::{
@@ -80,6 +80,12 @@ fn case(name: &'static str, sink_temperature: f64) -> CaseResult {
         resistance_lower: Some(0.11),
         resistance_upper: None,
         numerical_error: 0.0042,
+        worst: Some(Worst {
+            contact: [0.003, 0.02],
+            node_to_node: [0.14, 0.21],
+            added_by_joint: [0.11, 0.19],
+            source_to_sink: [0.18, 0.52],
+        }),
         draw_error: None,
         sampling: None,
         footprint: 0.0192,
@@ -119,6 +125,7 @@ fn estimate() -> Estimate {
         draws: 1024,
         field: "cone",
         resolution: "normal",
+        bolts_scatter: "one lot, all alike".to_owned(),
         source_plane: "mean of the heated zone on base".to_owned(),
         sink_plane: "mean of the back of panel".to_owned(),
         heat: Some(22.0),

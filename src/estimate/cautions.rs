@@ -73,7 +73,9 @@ fn preload_cautions(chain: &Chain) -> Vec<Caution> {
         found.extend(preload::window_cautions(&group));
         for (case, named) in joint.service.cases.iter().enumerate() {
             let force = preload::force_band(fastener).low;
-            let left = prepared.losses(joint, case, 1.0).balance(force);
+            let left = prepared
+                .losses(joint, case, &Realisation::losing(1.0))
+                .balance(force);
             let label = format!("{name}, {} case, lowest force", named.name);
             found.extend(preload::opened(&label, left));
         }

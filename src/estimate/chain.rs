@@ -14,11 +14,15 @@ pub use draw::{DrawPlan, Drawn, Workspace};
 pub(crate) use levels::LARGE_ERROR;
 pub(in crate::estimate) use warmth::Warmth;
 
-use std::borrow::Cow;
+use std::{
+    borrow::Cow,
+    sync::{Arc, OnceLock},
+};
 
 use conditions::Conditions;
 use cone::ConeModel;
 use elastic::ElasticModel;
+use form::with_error;
 
 use crate::{
     diagnostic::Caution,
@@ -40,6 +44,8 @@ pub struct Chain<'a> {
     /// Group of each bolt.
     group_of: Vec<usize>,
     model: Model,
+    /// Error of the discretisation, where it has been worked out; shared with other torques and media.
+    error: Arc<OnceLock<f64>>,
 }
 
 /// What stands for the pressure between the faces and for the heat in the plates.
@@ -99,6 +105,7 @@ impl<'a> Chain<'a> {
             .collect();
         let mut chain = Self {
             joint: Cow::Borrowed(joint),
+            error: Arc::default(),
             groups,
             group_of,
             model: match choice {
@@ -146,6 +153,7 @@ impl<'a> Chain<'a> {
             groups: self.groups.clone(),
             group_of: self.group_of.clone(),
             model: self.model.clone(),
+            error: self.error.clone(),
         };
         chain.model = chain.levelled()?;
         Ok(chain)
@@ -187,6 +195,7 @@ impl<'a> Chain<'a> {
             Model::Cone(model) => model.path(case, &conditions, at),
             Model::Elastic(model) => model.path(self, case, (&conditions, at))?,
         };
+        let path = with_error(path, at.numerical);
         self.check(case, &path)?;
         Ok(State { conditions, path })
     }
@@ -247,7 +256,7 @@ impl<'a> Chain<'a> {
             .fasteners
             .iter()
             .zip(&self.groups)
-            .map(|(fastener, group)| group.service_force(joint, fastener, (case, &at)))
+            .map(|(fastener, group)| group.service_force((joint, fastener), None, (case, &at)))
             .collect();
         self.group_of.iter().map(|group| by_group[*group]).collect()
     }
@@ -433,10 +442,32 @@ impl<'a> Chain<'a> {
     /// Error of the discretisation at the nominal state of the first case, relative to source to
     /// sink.
     pub fn discretisation_error(&self, state: &State) -> Result<f64, Failure> {
-        match &self.model {
+        if let Some(error) = self.known_error() {
+            return Ok(error);
+        }
+        let error = match &self.model {
             Model::Cone(model) => model.discretisation_error(self, state),
             Model::Elastic(model) => model.discretisation_error(self),
+        }?;
+        Ok(*self.error.get_or_init(|| error))
+    }
+
+    /// The same where this chain, or the one it comes from, has worked it out.
+    pub(crate) fn known_error(&self) -> Option<f64> {
+        self.error.get().copied()
+    }
+
+    /// Bolts whose forces move together in the draws: every group, or every bolt for itself.
+    pub(super) fn force_classes(&self) -> Vec<Vec<usize>> {
+        let bolts = 0..self.group_of.len();
+        if self.joint.bolts_scatter.own > 0.0 {
+            return bolts.map(|bolt| vec![bolt]).collect();
         }
+        let mut classes = vec![Vec::new(); self.groups.len()];
+        for bolt in bolts {
+            classes[self.group_of[bolt]].push(bolt);
+        }
+        classes
     }
 
     /// Share of what the gas takes off the joint's resistance: 0 in vacuum, near 1 where the gas

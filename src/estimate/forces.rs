@@ -2,7 +2,7 @@
 
 use crate::{
     estimate::{Band, Failure, Realisation},
-    joint::{Fastener, Joint},
+    joint::{Fastener, Joint, Retightened},
     preload::{self, Losses, Place, Stack, Supports, losses::Part},
 };
 
@@ -59,16 +59,24 @@ impl Group {
         })
     }
 
-    /// What acts on the force of one case when a share of the guide losses acts.
-    pub fn losses(&self, joint: &Joint, case: usize, share: f64) -> Losses {
+    /// What acts on the force of one case at a realisation.
+    pub fn losses(&self, joint: &Joint, case: usize, at: &Realisation) -> Losses {
         let (settling, relaxation) = match joint.losses {
-            Some(asked) => (
-                asked.settling.map_or(self.guide_settling, |settling| {
-                    self.stack.compliance.settling_loss(settling)
-                }),
-                asked.relaxation,
-            ),
-            None => (share * self.guide_settling, share * GUIDE_RELAXATION),
+            Some(asked) => {
+                let long_term = asked.long_term.at(at.long_term);
+                let (settling, short) = match asked.retightened {
+                    Retightened::Yes => (0.0, 0.0),
+                    Retightened::No => (
+                        asked.settling.map_or(self.guide_settling, |settling| {
+                            let settling = settling.at(at.settling);
+                            self.stack.compliance.settling_loss(settling)
+                        }),
+                        asked.relaxation.at(at.relaxation),
+                    ),
+                };
+                (settling, 1.0 - (1.0 - short) * (1.0 - long_term))
+            }
+            None => (at.loss * self.guide_settling, at.loss * GUIDE_RELAXATION),
         };
         Losses {
             settling,
@@ -77,32 +85,36 @@ impl Group {
         }
     }
 
-    /// Force in service of one realisation, N.
+    /// Force in service of one realisation, N: of a bolt by its number in the file, or of the lot.
     pub fn service_force(
         &self,
-        joint: &Joint,
-        fastener: &Fastener,
+        (joint, fastener): (&Joint, &Fastener),
+        bolt: Option<usize>,
         (case, at): (usize, &Realisation),
     ) -> f64 {
+        let own = joint.bolts_scatter.own;
+        let of = |lot: f64| bolt.map_or(lot, |bolt| at.of_bolt(lot, (bolt, own)));
         let place = Place {
-            friction: at.friction,
+            // A bolt's own place counts towards more force, which is less friction.
+            friction: -of(-at.friction),
             torque: at.tool,
-            preload: at.preload,
+            preload: of(at.preload),
+            running: at.running,
         };
         let assembly = preload::clamp_force(fastener, place);
-        preload::force_in_service(assembly, &self.losses(joint, case, at.loss))
+        preload::force_in_service(assembly, &self.losses(joint, case, at))
     }
 
     /// Force in service: nominal, the low corner with the losses, the high corner.
     pub fn service_band(&self, joint: &Joint, fastener: &Fastener, case: usize) -> Band {
         let band = preload::force_band(fastener);
-        let after = |force: f64, share: f64| {
-            preload::force_in_service(force, &self.losses(joint, case, share))
+        let after = |force: f64, lossy: &Realisation| {
+            preload::force_in_service(force, &self.losses(joint, case, lossy))
         };
         Band {
-            low: Some(after(band.low, 1.0)),
-            nominal: after(band.nominal, 0.0),
-            high: Some(after(band.high, 0.0)),
+            low: Some(after(band.low, &Realisation::losing(1.0))),
+            nominal: after(band.nominal, &Realisation::losing(0.0)),
+            high: Some(after(band.high, &Realisation::losing(-1.0))),
         }
     }
 
@@ -203,7 +215,11 @@ mod tests {
     fn settled(losses: &str, share: f64) -> f64 {
         let joint = read(&format!("{WASHED}\n{losses}")).expect("the joint is whole");
         let group = Group::new(&joint, &joint.fasteners[0]).expect("nothing is cold");
-        group.losses(&joint, 0, share).settling
+        let at = Realisation {
+            loss: share,
+            ..Realisation::default()
+        };
+        group.losses(&joint, 0, &at).settling
     }
 
     #[test]

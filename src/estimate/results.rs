@@ -302,6 +302,8 @@ pub struct CaseResult {
     pub resistance_upper: Option<f64>,
     /// Ring discretisation error, relative to source to sink.
     pub numerical_error: f64,
+    /// Every input at its unfavourable end; none without draws, and where an end has no number.
+    pub worst: Option<Worst>,
     /// Largest error of the surface that the draws are read from, relative to source to sink; none
     /// where every draw is solved, and without draws.
     pub draw_error: Option<f64>,
@@ -347,6 +349,19 @@ pub struct Checkpoint {
     pub high: f64,
 }
 
+/// Least and most of the four results with every input at the end that leads there, K/W.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Worst {
+    /// The faying faces alone.
+    pub contact: [f64; 2],
+    /// Mean of the first plate to mean of the last.
+    pub node_to_node: [f64; 2],
+    /// What the joint adds to the same path with perfect contact.
+    pub added_by_joint: [f64; 2],
+    /// Heated zone to sink surface.
+    pub source_to_sink: [f64; 2],
+}
+
 /// One input and its share of the spread.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Driver {
@@ -374,6 +389,8 @@ pub struct Estimate {
     pub field: &'static str,
     /// The resolution: `fast`, `normal` or `fine`.
     pub resolution: &'static str,
+    /// How the bolts scatter together, in words.
+    pub bolts_scatter: String,
     /// Name of the source plane.
     pub source_plane: String,
     /// Name of the sink plane.

@@ -7,6 +7,7 @@ use crate::{
     conductance::{Face, Hardness, Interface, Layer, gas},
     estimate::{Failure, Realisation},
     joint::{Bounds, Facing, Joint, Measured, MeasuredKind, Medium, Plate},
+    numerics::distribution::{Shape, deviations},
 };
 
 /// Hardness over its catalogue value when the catalogue knows no range.
@@ -18,11 +19,6 @@ const HARDNESS_OVER_BULK: [f64; 2] = [0.9, 1.6];
 const MICROHARDNESS_FACTOR: [f64; 2] = [0.8, 1.2];
 /// Conductivity over its catalogue value when the catalogue knows no range (judgement, ±5 %).
 const CONDUCTIVITY_FACTOR: [f64; 2] = [0.95, 1.05];
-/// Scatter of the solid-spot laws about measured joints of known surfaces, one standard deviation.
-///
-/// 12.6 % is the published figure for 61 coated points; 10–20 % for bare bead-blasted faces is
-/// from memory; 15 % lies between.
-const LAW_FACTOR: f64 = 1.15;
 /// Scatter of the gas parameter through the accommodation, one standard deviation (judgement).
 const GAS_FACTOR: f64 = 1.2;
 
@@ -30,7 +26,7 @@ const GAS_FACTOR: f64 = 1.2;
 #[derive(Clone, Copy, Debug)]
 pub struct Conducting {
     value: f64,
-    bounds: [f64; 2],
+    factor: Factor,
 }
 
 impl Conducting {
@@ -41,25 +37,26 @@ impl Conducting {
                 .material
                 .conductivity_at(temperature)
                 .map_err(|fault| Failure::Cold(fault.to_string()))?,
-            bounds: bounds_of(&plate.material.conductivity, CONDUCTIVITY_FACTOR),
+            factor: Factor::of(&plate.material.conductivity, CONDUCTIVITY_FACTOR),
         })
     }
 
     /// Value and bounds over it, as data.
     pub fn table(&self) -> Value {
-        json!({ "value": self.value, "bounds": self.bounds })
+        json!({ "value": self.value, "bounds": self.factor.bounds() })
     }
 
     /// At a place of its range, W/(m K); in its plane where that through the plate differs.
     #[inline]
     pub fn at(&self, place: f64) -> f64 {
-        self.value * between(self.bounds, place)
+        self.value * self.factor.at(place)
     }
 }
 
 /// Everything the laws need of an interface, with all looked up that no draw moves.
 #[derive(Clone, Debug)]
 pub struct Facets {
+    index: usize,
     nominal: Interface,
     sides: [Side; 2],
     gas: Option<gas::Rarefied>,
@@ -75,10 +72,9 @@ struct Side {
     /// What the conductivity in the plane is multiplied by below a spot.
     below_spots: f64,
     roughness: Bounds,
-    slope: f64,
     slope_factor: f64,
     hardness: Hardness,
-    hardness_bounds: [f64; 2],
+    hardness_factor: Factor,
 }
 
 impl Facets {
@@ -109,10 +105,11 @@ impl Facets {
             filler_modulus: None,
         };
         Ok(Self {
+            index,
             nominal,
             sides,
             gas,
-            solid: measured.map_or(LAW_FACTOR, |measured| measured.factor),
+            solid: measured.map_or(joint.contact.law_factor, |measured| measured.factor),
             filler: filler.map_or(1.0, |filler| filler.factor),
         })
     }
@@ -124,7 +121,9 @@ impl Facets {
             .iter()
             .zip(&self.nominal.faces)
             .map(|(side, face)| {
-                let Bounds { low, nominal, high } = side.roughness;
+                let Bounds {
+                    low, nominal, high, ..
+                } = side.roughness;
                 let hardness = match side.hardness {
                     Hardness::Meyer(value) => json!({ "meyer": value }),
                     Hardness::Micro { c1, c2 } => json!({ "c1": c1, "c2": c2 }),
@@ -133,10 +132,10 @@ impl Facets {
                     "conductivity": side.conducting.table(),
                     "below_spots": side.below_spots,
                     "roughness": [low, nominal, high],
-                    "slope": side.slope,
+                    "slope": face.slope,
                     "slope_factor": side.slope_factor,
                     "hardness": hardness,
-                    "hardness_bounds": side.hardness_bounds,
+                    "hardness_bounds": side.hardness_factor.bounds(),
                     "youngs_modulus": face.youngs_modulus,
                     "poisson": face.poisson,
                 })
@@ -158,12 +157,13 @@ impl Facets {
     /// alike.
     pub fn at(&self, joint: &Joint, at: &Realisation) -> Interface {
         let mut found = self.nominal.clone();
+        let finishes = joint.finishes(self.index);
         for (index, (face, side)) in found.faces.iter_mut().zip(&self.sides).enumerate() {
             let place = at.conductivity_of(joint, side.plate);
             face.conductivity = side.conducting.at(place) * side.below_spots;
             face.roughness = side.roughness.at(at.roughness[index]);
-            face.slope = side.slope * side.slope_factor.powf(at.slope[index]);
-            let factor = between(side.hardness_bounds, at.hardness);
+            face.slope = finishes[index].slope_at(at.slope[index]);
+            let factor = side.hardness_factor.at(at.hardness);
             face.hardness = match side.hardness {
                 Hardness::Micro { c1, c2 } => Hardness::Micro {
                     c1: c1 * factor,
@@ -172,9 +172,20 @@ impl Facets {
                 Hardness::Meyer(value) => Hardness::Meyer(value * factor),
             };
         }
-        found.gas = self.gas.map(|gas| gas.with(GAS_FACTOR.powf(at.gas)));
-        found.solid_factor = self.solid.powf(at.law);
-        found.filler_factor = self.filler.powf(at.filler);
+        let factor = |scatter: f64, place: f64| scatter.powf(deviations(place));
+        found.gas = self.gas.map(|gas| gas.with(factor(GAS_FACTOR, at.gas)));
+        found.solid_factor = factor(self.solid, at.law);
+        found.filler_factor = if self.filler > 1.0 {
+            factor(self.filler, at.filler)
+        } else {
+            1.0
+        };
+        if !joint.uncertain.is_empty() {
+            found.filler = joint.filler_at(self.index, &at.stated);
+            for (index, face) in found.faces.iter_mut().enumerate() {
+                face.emissivity = joint.emissivity_at((self.index, index), &at.stated);
+            }
+        }
         found
     }
 }
@@ -190,17 +201,16 @@ fn side(
     };
     let plate = &joint.plates[index];
     let finish = plate.face(facing);
-    let (hardness, hardness_bounds) = hardness((joint, interface), plate)?;
+    let (hardness, hardness_factor) = hardness((joint, interface), plate)?;
     Ok(Side {
         plate: index,
         conducting: Conducting::of(plate, temperature)?,
         // Below a spot a solid of two conductivities spreads heat as one of √(k_in k_through) does.
         below_spots: plate.material.through_ratio().sqrt(),
         roughness: finish.roughness,
-        slope: finish.slope,
         slope_factor: finish.slope_factor,
         hardness,
-        hardness_bounds,
+        hardness_factor,
     })
 }
 
@@ -210,7 +220,7 @@ fn face(joint: &Joint, (interface, facing): (usize, Facing), side: &Side) -> Fac
     Face {
         conductivity: side.conducting.at(0.0) * side.below_spots,
         roughness: side.roughness.nominal,
-        slope: side.slope,
+        slope: plate.face(facing).slope,
         youngs_modulus: plate.material.youngs_modulus.value,
         poisson: plate.material.poisson.value,
         hardness: side.hardness,
@@ -228,20 +238,29 @@ fn face(joint: &Joint, (interface, facing): (usize, Facing), side: &Side) -> Fac
 fn hardness(
     (joint, interface): (&Joint, usize),
     plate: &Plate,
-) -> Result<(Hardness, [f64; 2]), Failure> {
+) -> Result<(Hardness, Factor), Failure> {
     let Material {
         microhardness,
+        microhardness_spread,
         hardness,
         ..
     } = &plate.material;
     match (microhardness, hardness) {
-        (Some([c1, c2]), _) => Ok((Hardness::Micro { c1: *c1, c2: *c2 }, MICROHARDNESS_FACTOR)),
+        (Some([c1, c2]), _) => Ok((
+            Hardness::Micro { c1: *c1, c2: *c2 },
+            microhardness_spread.as_ref().map_or(
+                Factor::uniform(MICROHARDNESS_FACTOR),
+                |datum| Factor::of(datum, MICROHARDNESS_FACTOR),
+            ),
+        )),
         (None, Some(datum)) => Ok((
             Hardness::Meyer(datum.value),
-            bounds_of(datum, HARDNESS_OVER_BULK),
+            Factor::of(datum, HARDNESS_OVER_BULK),
         )),
         // Where the spots carry nothing the hardness is not asked for.
-        (None, None) if !joint.is_bare(interface) => Ok((Hardness::Meyer(1e9), [1.0; 2])),
+        (None, None) if !joint.is_bare(interface) => {
+            Ok((Hardness::Meyer(1e9), Factor::uniform([1.0; 2])))
+        }
         (None, None) => Err(Failure::NoHardness(plate.name.clone())),
     }
 }
@@ -254,19 +273,41 @@ fn local_points(measured: Option<&Measured>) -> Option<Vec<(f64, f64)>> {
     }
 }
 
-/// Bounds of a datum over its value, or default factors.
-fn bounds_of(datum: &Datum, otherwise: [f64; 2]) -> [f64; 2] {
-    match datum.range {
-        Some([low, high]) if low < high => [low / datum.value, high / datum.value],
-        _ => otherwise,
-    }
+/// What a value may be multiplied by.
+#[derive(Clone, Copy, Debug)]
+struct Factor {
+    ends: [f64; 3],
+    shape: Shape,
 }
 
-/// Factor at a place: the low end at −1, 1 at 0, the high end at +1.
-fn between([low, high]: [f64; 2], place: f64) -> f64 {
-    if place < 0.0 {
-        1.0 + place * (1.0 - low)
-    } else {
-        1.0 + place * (high - 1.0)
+impl Factor {
+    /// The same weight everywhere on one side of 1.
+    const fn uniform([low, high]: [f64; 2]) -> Self {
+        Self {
+            ends: [low, 1.0, high],
+            shape: Shape::Uniform,
+        }
+    }
+
+    /// Bounds of a datum over its value, or default factors.
+    fn of(datum: &Datum, otherwise: [f64; 2]) -> Self {
+        match datum.range {
+            Some([low, high]) if low < high => Self {
+                ends: [low / datum.value, 1.0, high / datum.value],
+                shape: datum.shape,
+            },
+            _ => Self::uniform(otherwise),
+        }
+    }
+
+    /// At a place of the weight.
+    #[inline]
+    fn at(&self, place: f64) -> f64 {
+        self.shape.at(self.ends, place)
+    }
+
+    /// Its ends.
+    fn bounds(&self) -> [f64; 2] {
+        [self.ends[0], self.ends[2]]
     }
 }

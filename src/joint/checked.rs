@@ -1,18 +1,22 @@
 //! The checked joint: SI, nothing missing, every default already recorded as an assumption.
 
+mod bounds;
 mod flatness_map;
 mod heat;
 mod plates;
 mod sandwich;
+mod uncertain;
 
-use crate::{catalog, diagnostic::Assumption};
+use crate::{catalog, diagnostic::Assumption, numerics::distribution::Shape};
 
+pub use bounds::Bounds;
 pub use flatness_map::FlatnessMap;
 pub use heat::{CooledPart, Cooling, Edge, HeatedZone, Heating, Sink, Source, Zone};
 pub use plates::{
     Bimetal, Coating, Facing, Feet, Finish, Outline, Patch, Plate, Rib, Sag, Underside,
 };
 pub use sandwich::{Flange, Ply, PlyKind, Sandwich};
+pub use uncertain::{Bolts, Uncertain, What};
 
 /// Most plates of a joint.
 pub const MOST_PLATES: usize = 6;
@@ -43,39 +47,12 @@ pub struct Joint {
     pub measured: Option<Measured>,
     /// Losses of clamp force asked for; without them losses act on the low force only.
     pub losses: Option<Losses>,
+    /// Values that the file states with a spread of their own.
+    pub uncertain: Vec<Uncertain>,
+    /// Whether the bolts scatter alike.
+    pub bolts_scatter: Bolts,
     /// What the file did not state.
     pub assumptions: Vec<Assumption>,
-}
-
-/// A value between its bounds: `low ≤ nominal ≤ high`.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Bounds {
-    /// Lowest value.
-    pub low: f64,
-    /// The value of the nominal chain.
-    pub nominal: f64,
-    /// Highest value.
-    pub high: f64,
-}
-
-impl Bounds {
-    /// A value without spread.
-    pub const fn exact(nominal: f64) -> Self {
-        Self {
-            low: nominal,
-            nominal,
-            high: nominal,
-        }
-    }
-
-    /// The value at a place between the bounds: −1 is low, 0 nominal, +1 high, linear between.
-    pub fn at(&self, place: f64) -> f64 {
-        if place < 0.0 {
-            self.nominal + place * (self.nominal - self.low)
-        } else {
-            self.nominal + place * (self.high - self.nominal)
-        }
-    }
 }
 
 /// What surrounds the joint and what is asked of it.
@@ -274,8 +251,12 @@ pub struct TorqueTightening {
     pub torque: f64,
     /// Tolerance of the tool, as a fraction.
     pub tolerance: f64,
+    /// How the weight lies within the tolerance.
+    pub tool: Shape,
     /// Running (prevailing) torque of the locking feature, N m.
     pub running: f64,
+    /// Its spread, N m, where one is stated.
+    pub running_spread: Option<Bounds>,
     /// Whether the file states the running torque.
     pub running_stated: bool,
     /// Friction.
@@ -304,6 +285,8 @@ pub enum Friction {
 pub struct Contact {
     /// Law of the solid spots.
     pub law: Law,
+    /// Factor by which the law may be off either way, one standard deviation.
+    pub law_factor: f64,
     /// Rule for the extent of contact.
     pub cone: ConeRule,
     /// Shape of the pressure over the radius.
@@ -501,9 +484,23 @@ pub enum MeasuredKind {
 pub struct Losses {
     /// Sum of settling over all contacts of one bolt, m; none stands for the guide values of its
     /// stack.
-    pub settling: Option<f64>,
+    pub settling: Option<Bounds>,
     /// Short-term relaxation as a fraction of the clamp force.
-    pub relaxation: f64,
+    pub relaxation: Bounds,
+    /// Whether the bolts are tightened again after settling.
+    pub retightened: Retightened,
+    /// Relaxation in the long term as a fraction of the clamp force; exactly zero where none is
+    /// stated.
+    pub long_term: Bounds,
+}
+
+/// Whether bolts are tightened again after they have settled.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Retightened {
+    /// To the full torque: settling and short-term relaxation are over.
+    Yes,
+    /// Never.
+    No,
 }
 
 impl Joint {

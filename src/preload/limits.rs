@@ -233,11 +233,7 @@ mod tests {
 
     #[test]
     fn largest_torque_stands_exactly_at_its_limit() {
-        let nut_factor = Friction::NutFactor(Bounds {
-            low: 0.12,
-            nominal: 0.16,
-            high: 0.2,
-        });
+        let nut_factor = Friction::NutFactor(Bounds::uniform([0.12, 0.16, 0.2]));
         let mut soft = supports();
         soft.head_limit = Some(150e6);
         let mut tapped = m6();

@@ -4,7 +4,7 @@ use crate::{
     diagnostic::{Assumption, Caution},
     estimate::{
         Band, BoltResult, CaseResult, Estimate, InterfaceResult, Met, PlaneResult,
-        RequirementResult, RingRow, Sampling, TorqueSweep,
+        RequirementResult, RingRow, Sampling, TorqueSweep, Worst,
     },
     joint::{Limit, Plane, RequirementKind},
     report::{media::vacuum_over, number::inverse},
@@ -46,6 +46,7 @@ pub fn estimate(estimate: &Estimate) -> Value {
             json!({ "source": estimate.source_plane, "sink": estimate.sink_plane }),
         ),
         ("heat", json!(estimate.heat)),
+        ("bolts_scatter", json!(estimate.bolts_scatter)),
         ("requirement", worst(estimate)),
         ("cases", json!(cases)),
         ("cautions", cautions(&estimate.cautions)),
@@ -98,6 +99,7 @@ fn case(case: &CaseResult) -> Map<String, Value> {
                 "resistance_upper": case.resistance_upper,
             }),
         ),
+        ("worst", case.worst.as_ref().map_or(Value::Null, worst_cases)),
         ("numerical_error", json!(case.numerical_error)),
         ("draw_error", json!(case.draw_error)),
         ("sampling", case.sampling.as_ref().map_or(Value::Null, sampling)),
@@ -142,6 +144,17 @@ fn sampling(sampling: &Sampling) -> Value {
         "source_to_sink": sampling.course.iter().map(|point| {
             json!({ "draws": point.draws, "low": point.low, "high": point.high })
         }).collect::<Vec<Value>>(),
+    })
+}
+
+/// Resistances with every input at its unfavourable end, K/W.
+fn worst_cases(worst: &Worst) -> Value {
+    let ends = |[low, high]: [f64; 2]| json!({ "low": low, "high": high });
+    json!({
+        "contact": ends(worst.contact),
+        "node_to_node": ends(worst.node_to_node),
+        "added_by_joint": ends(worst.added_by_joint),
+        "source_to_sink": ends(worst.source_to_sink),
     })
 }
 

@@ -78,12 +78,13 @@ fn roughness(joint: &Joint, side: usize) -> Option<String> {
     let mut faces = (0..joint.interfaces())
         .filter(|interface| joint.is_bare(*interface))
         .map(|interface| joint.finishes(interface)[side].roughness);
-    let now = faces.find(|bounds| bounds.low < bounds.high)?;
+    let now = faces.find(Bounds::is_spread)?;
     let face = ["warm", "cold"][side];
     let micrometres = Bounds {
         low: now.low * 1e6,
         nominal: now.nominal * 1e6,
         high: now.high * 1e6,
+        ..now
     };
     Some(format!(
         "measure Rq of the {face} face (now {} µm), or call out a closer roughness",

@@ -63,6 +63,8 @@ pub fn sweep_along(chain: &Chain, options: &SweepOptions) -> Result<TorqueSweep,
     if !(0.0 < from && from < to && to.is_finite() && options.steps >= 2) {
         return Err(Failure::SweepRange { from, to });
     }
+    // First of all, so that every torque knows the error of the grid.
+    let cautions = estimate::nominal(chain, &options.chain)?.cautions;
     // Without draws every torque is solved for itself, which is soon done.
     if options.steps > FEW_STEPS && options.chain.draws > 0 {
         chain.expect_torques((case, options.group), [from, to])?;
@@ -71,7 +73,6 @@ pub fn sweep_along(chain: &Chain, options: &SweepOptions) -> Result<TorqueSweep,
         .map(|step| from + (to - from) * step as f64 / (options.steps - 1) as f64)
         .map(|torque| point(chain, options, (case, torque)))
         .collect::<Result<Vec<TorquePoint>, Failure>>()?;
-    let cautions = estimate::nominal(chain, &options.chain)?.cautions;
     let required = required(joint);
     let minimum = match required {
         Some((_, Limit::Least)) => None,

@@ -93,7 +93,7 @@ fn guide_settling_is_left_to_the_preload() {
     assert_eq!(losses("settling = \"guide\"").settling, None);
     assert_eq!(losses("relaxation = \"3 %\"").settling, None);
     let stated = losses("settling = \"12 µm\"").settling;
-    assert!(stated.is_some_and(|settling| near(settling, 12e-6)));
+    assert!(stated.is_some_and(|settling| near(settling.nominal, 12e-6)));
 }
 
 #[test]

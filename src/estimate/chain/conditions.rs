@@ -129,7 +129,7 @@ impl<'a> Outlook<'a> {
     pub(super) fn tables(&self) -> Value {
         let joint = self.chain.joint();
         let losses = |(_, group): (_, &Group)| {
-            let losses = group.losses(joint, self.case, 1.0);
+            let losses = group.losses(joint, self.case, &Realisation::losing(1.0));
             json!({
                 "settling": losses.settling,
                 "relaxation": losses.relaxation,
@@ -162,11 +162,7 @@ impl<'a> Outlook<'a> {
         let chain = self.chain;
         let joint = chain.joint();
         let forces = &mut conditions.forces;
-        forces.clear();
-        for (fastener, group) in chain.groups() {
-            let force = group.service_force(joint, fastener, (self.case, at));
-            forces.extend(std::iter::repeat_n(force, fastener.places.len()));
-        }
+        chain.put_service_forces((self.case, at), forces);
         let law = chain.force_law(forces, conditions.temperature);
         conditions.faces.clear();
         conditions.faces.extend(self.facets.iter().map(|facets| {
@@ -225,6 +221,22 @@ impl Chain<'_> {
         at: &Realisation,
     ) -> Result<Conditions, Failure> {
         Ok(Outlook::of(self, case, warmth)?.at(at))
+    }
+
+    /// Puts the clamp force of every bolt in service at one realisation, N.
+    fn put_service_forces(&self, (case, at): (usize, &Realisation), forces: &mut Vec<f64>) {
+        let joint = self.joint();
+        forces.clear();
+        for (fastener, group) in self.groups() {
+            let force = |bolt| group.service_force((joint, fastener), bolt, (case, at));
+            if at.bolts.is_empty() {
+                forces.extend(std::iter::repeat_n(force(None), fastener.places.len()));
+            } else {
+                let first = forces.len();
+                let bolts = first..first + fastener.places.len();
+                forces.extend(bolts.map(|bolt| force(Some(bolt))));
+            }
+        }
     }
 
     /// Measured W/K per bolt as a local conductance over pressure, W/(m² K Pa).

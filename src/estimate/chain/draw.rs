@@ -102,7 +102,9 @@ impl DrawPlan<'_> {
         self.outlook.put(at, conditions);
         let found = match (&self.field, &self.chain.model) {
             (Field::Elastic(plan), _) => plan.drawn(conditions, at),
-            (Field::Cone, Model::Cone(model)) => Drawn::of(&model.path(self.case, conditions, at)),
+            (Field::Cone, Model::Cone(model)) => {
+                Drawn::of(&model.path(self.case, conditions, at)).with_error(at.numerical)
+            }
             (Field::Cone, Model::Elastic(_)) => unreachable!("the plan is of this chain"),
         };
         if found.is_sound() {
@@ -156,6 +158,20 @@ impl Drawn {
             && unsigned
                 .iter()
                 .all(|value| value.is_finite() && *value > 0.0)
+    }
+
+    /// Moved by what the grid may err: all of it alike, but for the ring sum.
+    pub(super) fn with_error(self, numerical: f64) -> Self {
+        let factor = 1.0 + numerical;
+        Self {
+            contact: self.contact,
+            node_to_node: self.node_to_node * factor,
+            added_by_joint: self.added_by_joint * factor,
+            source_to_sink: self.source_to_sink * factor,
+            perfect_contact: self.perfect_contact * factor,
+            hottest: self.hottest * factor,
+            interface_drop: self.interface_drop * factor,
+        }
     }
 
     /// With the model form applied to what the joint adds.

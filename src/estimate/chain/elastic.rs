@@ -3,6 +3,7 @@
 mod columns;
 mod flat;
 mod level;
+mod pattern;
 mod plan;
 mod response;
 mod rings;
@@ -263,8 +264,13 @@ impl ElasticModel {
             // nominal stand on the ground level.
             return Ok(spread.response.alone(&to));
         };
+        let (there, here) = (
+            spread.shift(&conditions.forces),
+            spread.shift(&case.conditions.forces),
+        );
+        let shift = std::array::from_fn(|reading| there[reading] - here[reading]);
         let places = [at.field, at.flatness];
-        Ok(spread.moved(solved.path(), (&from, &to), places))
+        Ok(spread.moved(solved.path(), (&from, &to), (&shift, places)))
     }
 
     /// Works out the spread of a case: it runs on all cores itself, so that draws that run side by

@@ -187,8 +187,8 @@ pub static TORQUE: Section = Section {
     fields: &[
         field(
             "value",
-            Kind::Quantity(Quantity::Torque),
-            "torque at the wrench, running torque included",
+            Kind::Spread(Measure::Quantity(Quantity::Torque)),
+            "torque at the wrench, running torque included; with a spread it states the tolerance",
             "\"1.7 N·m\"",
         )
         .within(1e-6, 1e6)
@@ -203,8 +203,8 @@ pub static TORQUE: Section = Section {
         .default("5 %"),
         field(
             "running",
-            Kind::Quantity(Quantity::Torque),
-            "running torque of a locking feature",
+            Kind::Spread(Measure::Quantity(Quantity::Torque)),
+            "running torque of a locking feature, or its range",
             "\"0.15 N·m\"",
         )
         .within(0.0, 1e6)

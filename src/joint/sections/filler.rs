@@ -1,12 +1,18 @@
 //! Fields of fillers and of measurements.
 
 use crate::{
-    joint::fields::{Catalogue, Field, Kind, Section, field},
+    joint::fields::{Catalogue, Field, Kind, Measure, Section, field},
     units::Quantity,
 };
 
 const fn length(key: &'static str, meaning: &'static str, example: &'static str) -> Field {
-    field(key, Kind::Quantity(Quantity::Length), meaning, example).within(1e-8, 0.1)
+    field(
+        key,
+        Kind::Spread(Measure::Quantity(Quantity::Length)),
+        meaning,
+        example,
+    )
+    .within(1e-8, 0.1)
 }
 
 const fn scatter(meaning: &'static str) -> Field {
@@ -46,7 +52,7 @@ pub static FILLER: Section = Section {
         ),
         field(
             "conductivity",
-            Kind::Quantity(Quantity::Conductivity),
+            Kind::Spread(Measure::Quantity(Quantity::Conductivity)),
             "conductivity of the filler",
             "\"3 W/(m·K)\"",
         )
@@ -63,7 +69,7 @@ pub static FILLER: Section = Section {
         ),
         field(
             "boundary",
-            Kind::Quantity(Quantity::AreaResistance),
+            Kind::Spread(Measure::Quantity(Quantity::AreaResistance)),
             "resistance of both boundaries of a layer together",
             "\"0.1 K·cm²/W\"",
         )

@@ -92,6 +92,28 @@ fn sampling(sampling: &Sampling) -> String {
     format!("{}\n", wrapped(&line, WIDTH, 2))
 }
 
+/// Least and most with every input at the end that leads there, beside the band of the draws.
+pub fn worst(estimate: &Estimate, case: &CaseResult) -> String {
+    let Some(worst) = case.worst else {
+        return String::new();
+    };
+    let told = |name: &str, [least, most]: [f64; 2]| {
+        format!("{name} {} to {}", four(least), four(most))
+    };
+    let all = [
+        told("contact only", worst.contact),
+        told("node to node", worst.node_to_node),
+        told("added by joint", worst.added_by_joint),
+        told("source to sink", worst.source_to_sink),
+    ];
+    let line = format!(
+        "worst cases K/W, every input at its end (3 sigma where it has none), bolts {}: {}",
+        estimate.bolts_scatter,
+        all.join("; ")
+    );
+    format!("{}\n", wrapped(&line, WIDTH, 2))
+}
+
 /// The conductances per area and per bolt, for those who must compare.
 fn scaled(case: &CaseResult) -> String {
     let nominal = |resistance: &Band| inverse(resistance)[1].unwrap_or(f64::NAN);

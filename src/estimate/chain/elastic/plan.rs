@@ -45,7 +45,10 @@ impl ElasticModel {
         let (from, read) = match &case.solved {
             Some(solved) => {
                 let departure = spread.gauge.departure(&case.conditions);
-                (Drawn::of(solved.path()), flat.at(&departure))
+                let shift = spread.shift(&case.conditions.forces);
+                let here = flat.at(&departure);
+                let read = std::array::from_fn(|reading| here[reading] + shift[reading]);
+                (Drawn::of(solved.path()), read)
             }
             // Without force in the nominal state the draws stand on the ground level.
             None => (
@@ -80,7 +83,10 @@ impl ElasticModel {
         }
         let task = (GROUND, Variant::Stated);
         let solved = self.solved(chain, task, (&conditions, &Factors::NONE))?;
-        let told = spread.response.alone(&to).source_to_sink;
+        let base = &spread.response.base;
+        let shift = spread.shift(&conditions.forces);
+        let moved = (&response::NOMINAL, &to);
+        let told = spread.response.shifted(base, moved, &shift).source_to_sink;
         Ok(Some([told, solved.path().source_to_sink]))
     }
 }
@@ -97,9 +103,15 @@ impl ElasticPlan<'_> {
         let open = self.spread.response.open.as_ref();
         let moved = match open.filter(|_| to[0] == f64::NEG_INFINITY) {
             Some(open) => Drawn::of(open),
-            None => self.moved(self.flat.at(&to)),
+            None => {
+                let shift = self.spread.shift(&conditions.forces);
+                let there = self.flat.at(&to);
+                self.moved(std::array::from_fn(|reading| there[reading] + shift[reading]))
+            }
         };
-        moved.with_form(self.spread.form(to[0], [at.field, at.flatness]))
+        moved
+            .with_form(self.spread.form(to[0], [at.field, at.flatness]))
+            .with_error(at.numerical)
     }
 
     /// The path moved to other readings: that of `Response::applied`.

@@ -302,7 +302,17 @@ impl Response {
     }
 
     /// A path of a finer solution at one departure, moved to another as the surfaces say.
-    pub(super) fn applied(&self, path: &Path, (from, to): (&Departure, &Departure)) -> Path {
+    pub(super) fn applied(&self, path: &Path, ends: (&Departure, &Departure)) -> Path {
+        self.shifted(path, ends, &[0.0; 7])
+    }
+
+    /// The same with what the pattern of the forces adds to the readings.
+    pub(super) fn shifted(
+        &self,
+        path: &Path,
+        (from, to): (&Departure, &Departure),
+        shift: &Readings,
+    ) -> Path {
         if let (f64::NEG_INFINITY, Some(open)) = (to[0], &self.open) {
             return Path {
                 coolant_drop: path.coolant_drop,
@@ -311,7 +321,7 @@ impl Response {
         }
         let (there, here) = (self.at(to), self.at(from));
         let [contact, perfect, added, node, interface, hottest, joint]: Readings =
-            std::array::from_fn(|reading| there[reading] - here[reading]);
+            std::array::from_fn(|reading| there[reading] - here[reading] + shift[reading]);
         let perfect_contact = path.perfect_contact * perfect.exp();
         let added_by_joint = if added.is_finite() {
             path.added_by_joint * added.exp()
@@ -448,7 +458,7 @@ fn surfaces((forces, steps): (&[f64], &[f64]), read: &[Readings]) -> Vec<[Surfac
         .collect()
 }
 
-fn readings(path: &Path) -> Readings {
+pub(super) fn readings(path: &Path) -> Readings {
     let whole = path.source_to_sink;
     [
         path.contact.ln(),

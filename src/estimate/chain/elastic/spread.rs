@@ -11,7 +11,8 @@ use crate::{
             elastic::{
                 ElasticModel,
                 level::GROUND,
-                response::{self, Departure, Gauge, Response},
+                pattern::Pattern,
+                response::{self, Departure, Gauge, Readings, Response},
                 solver::Factors,
                 variant::Variant,
             },
@@ -26,6 +27,7 @@ use crate::{
 pub(super) struct Spread {
     pub(super) gauge: Gauge,
     pub(super) response: Response,
+    pattern: Pattern,
     bounds: Vec<Bounds>,
 }
 
@@ -41,14 +43,19 @@ struct Bounds {
 }
 
 impl Spread {
+    /// What the forces of bolts, N, add to the readings beyond their sum.
+    pub(super) fn shift(&self, forces: &[f64]) -> Readings {
+        self.pattern.shift(forces)
+    }
+
     /// A path moved from one departure to another, at a place of the model form and of flatness.
     pub(super) fn moved(
         &self,
         path: &Path,
         (from, to): (&Departure, &Departure),
-        places: [f64; 2],
+        (shift, places): (&Readings, [f64; 2]),
     ) -> Path {
-        let moved = self.response.applied(path, (from, to));
+        let moved = self.response.shifted(path, (from, to), shift);
         with_form(moved, self.form(to[0], places))
     }
 
@@ -138,8 +145,10 @@ impl ElasticModel {
             },
             open,
         )?;
-        if chain.joint().fasteners.len() > 1 {
-            let error = self.pattern_error(chain, (case, nominal), (&gauge, &response))?;
+        let pattern = self.pattern(chain, nominal)?;
+        if !pattern.is_common() {
+            let probed = (&gauge, &response, &pattern);
+            let error = self.pattern_error(chain, (case, nominal), probed)?;
             response.error = worse(response.error, error);
         }
         let bounds = if let Some(known) = known {
@@ -159,6 +168,7 @@ impl ElasticModel {
         Ok(Spread {
             gauge,
             response,
+            pattern,
             bounds,
         })
     }
@@ -189,34 +199,61 @@ impl ElasticModel {
         Ok(Bounds { force, form, bent })
     }
 
-    /// Error of taking the forces of several groups as one: source to sink at the least and at the
-    /// most force of every group, relative.
+    /// How the readings answer to bolts that leave the common pattern, by differences on the ground
+    /// level; contacts are solved one after the other.
+    fn pattern(&self, chain: &Chain, nominal: &Conditions) -> Result<Pattern, Failure> {
+        Pattern::through(&nominal.forces, chain.force_classes(), |forces| {
+            self.under_forces(chain, nominal, forces)
+        })
+    }
+
+    /// Error of the slopes of the pattern: source to sink at the least and at the most force of every
+    /// bolt, and with every other class half way to its least and the rest to its most, relative.
     fn pattern_error(
         &self,
         chain: &Chain,
         (case, nominal): (usize, &Conditions),
-        (gauge, response): (&Gauge, &Response),
+        (gauge, response, pattern): (&Gauge, &Response, &Pattern),
     ) -> Result<f64, Failure> {
-        let stated = (GROUND, Variant::Stated);
-        let base = self.solved(chain, stated, (nominal, &Factors::NONE))?;
-        let mut error = 0.0;
-        for ends in chain.force_ends(case) {
-            let forces = ends
-                .iter()
-                .zip(&nominal.forces)
+        let base = self.under_forces(chain, nominal, nominal.forces.clone())?;
+        let ends = chain.force_ends(case).map(|end| {
+            let floored = end.iter().zip(&nominal.forces);
+            floored
                 .map(|(end, nominal)| end.max(response::LEAST_FORCE * nominal))
-                .collect();
+                .collect::<Vec<f64>>()
+        });
+        let mixed = pattern.alternating(&ends);
+        let [least, most] = ends;
+        let mut error = 0.0;
+        for forces in [least, most, mixed] {
+            let shift = pattern.shift(&forces);
+            let solved = self.under_forces(chain, nominal, forces.clone())?;
             let conditions = Conditions {
                 forces,
                 ..nominal.clone()
             };
-            let solved = self.solved(chain, stated, (&conditions, &Factors::NONE))?;
             let from = gauge.departure(nominal);
             let to = gauge.departure(&conditions);
-            let told = response.applied(base.path(), (&from, &to)).source_to_sink;
-            error = worse(error, (told / solved.path().source_to_sink - 1.0).abs());
+            let told = response.shifted(&base, (&from, &to), &shift).source_to_sink;
+            error = worse(error, (told / solved.source_to_sink - 1.0).abs());
         }
         Ok(error)
+    }
+
+    /// The path on the ground level at nominal under other forces, N.
+    fn under_forces(
+        &self,
+        chain: &Chain,
+        nominal: &Conditions,
+        forces: Vec<f64>,
+    ) -> Result<Path, Failure> {
+        let conditions = Conditions {
+            forces,
+            ..nominal.clone()
+        };
+        let stated = (GROUND, Variant::Stated);
+        let solved = self.solved(chain, stated, (&conditions, &Factors::NONE))?;
+        Ok(solved.path().clone())
     }
 
     /// The path on the ground level away from nominal.
