@@ -152,19 +152,15 @@ impl Draws {
             .iter()
             .map(|drawn| drawn.source_to_sink.ln())
             .collect();
-        let drivers = self
-            .inputs
-            .iter()
-            .enumerate()
-            .map(|(place, input)| Driver {
-                input: input.name,
-                share: correlation(
-                    self.drawn.iter().map(|drawn| drawn.readings[place]),
-                    &outcome,
-                )
-                .powi(2),
-                remedy: input.remedy,
-            });
+        let drivers = self.inputs.iter().enumerate().map(|(place, input)| Driver {
+            input: input.name,
+            share: correlation(
+                self.drawn.iter().map(|drawn| drawn.readings[place]),
+                &outcome,
+            )
+            .powi(2),
+            remedy: input.remedy,
+        });
         let mut drivers = by_name(drivers.collect());
         drivers.sort_by(|one, other| other.share.total_cmp(&one.share));
         drivers
