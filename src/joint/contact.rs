@@ -3,8 +3,8 @@
 use crate::{
     catalog::MaterialKind,
     joint::{
-        Bounds, Compliance, ConeRule, ConeShape, Contact, FaceFriction, Finish, HeadModel, Law, Losses,
-        Retightened,
+        Bounds, Compliance, ConeRule, ConeShape, Contact, FaceFriction, Finish, HeadModel, Law,
+        Losses, Retightened,
         collector::{Collector, Wording, fault},
         plates::{PlateDraft, two_ways},
         record::{PerPlate, Record},

@@ -8,9 +8,7 @@ use crate::{
     catalog,
     joint::{
         MOST_PLATES,
-        fields::{
-            Catalogue, DISTRIBUTIONS, Field, Kind, Measure, Need, SPREAD_KEYS, Section,
-        },
+        fields::{Catalogue, DISTRIBUTIONS, Field, Kind, Measure, Need, SPREAD_KEYS, Section},
         seats::HEADS,
         sections::FILE,
     },

@@ -1,10 +1,6 @@
 //! How inputs scatter together, and which values carry a spread of their own.
 
-use crate::joint::{
-    Bolts, Uncertain, What,
-    collector::Collector,
-    record::Record,
-};
+use crate::joint::{Bolts, Uncertain, What, collector::Collector, record::Record};
 
 /// Reads whether the bolts scatter alike; none when it is faulty.
 pub(super) fn bolts(file: &Record, collector: &mut Collector) -> Option<Bolts> {

@@ -5,9 +5,9 @@ use std::f64::consts::PI;
 use crate::{
     catalog::{Datum, Grade, Material, MaterialKind, Status, Thread},
     joint::{
-        Bolts, Bounds, Compliance, ConeRule, ConeShape, Contact, Engagement, FaceFriction, Fastener,
-        Finish, Friction, HeadModel, Joint, Law, Medium, Outline, Plate, Seat, Service, Sink,
-        Source, Tightening, TorqueTightening, Zone,
+        Bolts, Bounds, Compliance, ConeRule, ConeShape, Contact, Engagement, FaceFriction,
+        Fastener, Finish, Friction, HeadModel, Joint, Law, Medium, Outline, Plate, Seat, Service,
+        Sink, Source, Tightening, TorqueTightening, Zone,
     },
     numerics::distribution::Shape,
 };

@@ -398,7 +398,10 @@ fn forces(chain: &Chain) -> Vec<Input> {
                     found.push(known.bounded(Moves::LessForce));
                 }
             };
-            losses.settling.into_iter().for_each(|settling| loses(settling, &SETTLING));
+            losses
+                .settling
+                .into_iter()
+                .for_each(|settling| loses(settling, &SETTLING));
             loses(losses.relaxation, &RELAXATION);
             loses(losses.long_term, &LONG_TERM);
         }

@@ -169,7 +169,9 @@ impl Finish {
     pub fn slope_at(&self, place: f64) -> f64 {
         match self.slope_spread {
             Some(spread) => spread.at(place),
-            None if self.slope_factor > 1.0 => self.slope * self.slope_factor.powf(deviations(place)),
+            None if self.slope_factor > 1.0 => {
+                self.slope * self.slope_factor.powf(deviations(place))
+            }
             // An end of the scatter is infinitely far, and no scatter stays none there.
             None => self.slope,
         }

@@ -215,7 +215,11 @@ impl Walk<'_> {
         None
     }
 
-    pub(super) fn told<T>(&mut self, stated: Stated<'_>, parsed: Result<T, UnitFault>) -> Option<T> {
+    pub(super) fn told<T>(
+        &mut self,
+        stated: Stated<'_>,
+        parsed: Result<T, UnitFault>,
+    ) -> Option<T> {
         match parsed {
             Ok(value) => Some(value),
             Err(unit) => {

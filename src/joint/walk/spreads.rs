@@ -124,7 +124,11 @@ impl Walk<'_> {
             Measure::Quantity(quantity) => self.told(stated, units::parse(text, quantity)),
             Measure::Roughness => self.roughness_of(stated, text),
             Measure::Number => {
-                let number = text.trim().parse::<f64>().ok().filter(|value| value.is_finite());
+                let number = text
+                    .trim()
+                    .parse::<f64>()
+                    .ok()
+                    .filter(|value| value.is_finite());
                 if number.is_none() {
                     self.no_part(stated, text);
                 }
@@ -154,7 +158,13 @@ impl Walk<'_> {
                 Measure::Roughness => {
                     self.roughness_of(stated, &format!("{}{text}", prefix(value, text)))
                 }
-                Measure::Number => text.parse::<f64>().ok(),
+                Measure::Number => {
+                    let number = text.parse::<f64>().ok();
+                    if number.is_none() {
+                        self.no_part(stated, text);
+                    }
+                    number
+                }
             }
             .map(Deviation::Absolute)
         }?;
@@ -229,7 +239,10 @@ impl Walk<'_> {
             (Some(sigma), [None, Some(nominal), None]) => {
                 self.about_sigma(stated, sigma, (nominal, measure, shape))
             }
-            _ => self.mixed(stated, "with a sigma has one nominal value and no low or high"),
+            _ => self.mixed(
+                stated,
+                "with a sigma has one nominal value and no low or high",
+            ),
         }
     }
 

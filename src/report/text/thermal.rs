@@ -97,9 +97,8 @@ pub fn worst(estimate: &Estimate, case: &CaseResult) -> String {
     let Some(worst) = case.worst else {
         return String::new();
     };
-    let told = |name: &str, [least, most]: [f64; 2]| {
-        format!("{name} {} to {}", four(least), four(most))
-    };
+    let told =
+        |name: &str, [least, most]: [f64; 2]| format!("{name} {} to {}", four(least), four(most));
     let all = [
         told("contact only", worst.contact),
         told("node to node", worst.node_to_node),

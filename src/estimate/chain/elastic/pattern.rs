@@ -16,7 +16,7 @@ const STEP: f64 = 0.25;
 ///
 /// The sum of all forces is the variable of the response; this is what the pattern adds, to first
 /// order. Its error is found on solved patterns.
-/// Checked: `slopes_follow_a_pattern_of_known_answer`, `independent_bolts_match_direct_solutions`.
+/// Checked: `slopes_follow_a_pattern_of_known_answer`.
 #[derive(Clone, Debug)]
 pub(super) struct Pattern {
     nominal: Vec<f64>,
