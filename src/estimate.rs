@@ -8,6 +8,8 @@ mod maps;
 mod results;
 mod surfaces;
 mod temperatures;
+mod torques;
+mod window;
 
 pub(crate) use chain::LARGE_ERROR;
 pub use chain::{Chain, Meeting, State};
@@ -15,6 +17,7 @@ pub use choice::{Choice, Fineness, Watch};
 pub use forces::Strength;
 pub use maps::{field_map, ring_tables};
 pub use results::*;
+pub use window::*;
 pub use temperatures::{
     FacePoint, HeatMap, SectionBolt, SectionPlate, Solid, StackSection, Temperatures, Through,
     heat_map, stack_section,
@@ -58,6 +61,8 @@ pub struct Options {
 pub struct Realisation {
     /// Friction of all bolts, place.
     pub friction: f64,
+    /// Load from outside along the bolts, place.
+    pub load: f64,
     /// Torque tool, place.
     pub tool: f64,
     /// Given preload or scatter of the method, place.

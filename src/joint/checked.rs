@@ -2,6 +2,7 @@
 
 mod flatness_map;
 mod heat;
+mod loads;
 mod plates;
 mod sandwich;
 
@@ -9,6 +10,7 @@ use crate::{catalog, diagnostic::Assumption};
 
 pub use flatness_map::FlatnessMap;
 pub use heat::{CooledPart, Cooling, Edge, HeatedZone, Heating, Sink, Source, Zone};
+pub use loads::{AxialLoad, DiscSprings, InsertHold};
 pub use plates::{
     Bimetal, Coating, Facing, Feet, Finish, Outline, Patch, Plate, Rib, Sag, Underside,
 };
@@ -203,6 +205,14 @@ pub struct Fastener {
     pub shank_path: bool,
     /// Washers that keep the heat of the plates from head and nut.
     pub isolating: Option<Isolating>,
+    /// A load from outside along each bolt.
+    pub axial_load: Option<AxialLoad>,
+    /// Disc springs under head or nut.
+    pub disc_springs: Option<DiscSprings>,
+    /// Whether a split spring washer lies under the head.
+    pub split_washer: bool,
+    /// How its inserts are held.
+    pub insert_hold: InsertHold,
     /// Places in joint coordinates, m.
     pub places: Vec<[f64; 2]>,
 }
@@ -504,6 +514,9 @@ pub struct Losses {
     pub settling: Option<f64>,
     /// Short-term relaxation as a fraction of the clamp force.
     pub relaxation: f64,
+    /// What a bolt loses while the others are tightened, as a fraction of its clamp force; none stands
+    /// for the judgement on its joint.
+    pub interaction: Option<f64>,
 }
 
 impl Joint {

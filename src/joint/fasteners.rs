@@ -8,6 +8,7 @@ use crate::{
         collector::{Collector, Wording, fault},
         isolating,
         lands::{self, Land, Site},
+        loads,
         materials::Own,
         patterns,
         plates::PlateDraft,
@@ -109,6 +110,12 @@ fn group(
     let isolating = isolating::read(record, (engagement, own), collector);
     let land = seated.map_or_else(Land::default, Seated::land);
     let site = places.map(|places| Site { land, places });
+    let axial_load = loads::axial(record, collector);
+    let disc_springs = loads::springs(record, collector);
+    let insert_hold = loads::insert(record, collector);
+    let split_washer = record
+        .flag("split_washer")
+        .or((!record.has("split_washer")).then_some(false));
     let shank_path = record
         .flag("shank_path")
         .or((!record.has("shank_path")).then_some(true));
@@ -131,6 +138,10 @@ fn group(
             head_plate: seated.head_plate,
             shank_path: shank_path?,
             isolating: isolating?,
+            axial_load: axial_load?,
+            disc_springs: disc_springs?,
+            split_washer: split_washer?,
+            insert_hold: insert_hold?,
             places: site
                 .as_ref()?
                 .places

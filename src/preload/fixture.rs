@@ -6,7 +6,7 @@ use crate::{
     catalog::{Datum, Grade, Material, MaterialKind, Status, Thread},
     joint::{
         Bounds, Compliance, ConeRule, ConeShape, Contact, Engagement, FaceFriction, Fastener,
-        Finish, Friction, HeadModel, Joint, Law, Medium, Outline, Plate, Seat, Service, Sink,
+        Finish, Friction, HeadModel, InsertHold, Joint, Law, Medium, Outline, Plate, Seat, Service, Sink,
         Source, Tightening, TorqueTightening, Zone,
     },
 };
@@ -89,6 +89,10 @@ pub fn m6() -> Fastener {
         head_plate: 0,
         shank_path: true,
         isolating: None,
+        axial_load: None,
+        disc_springs: None,
+        split_washer: false,
+        insert_hold: InsertHold::default(),
         places: vec![[20e-3, 20e-3], [60e-3, 20e-3]],
     }
 }
@@ -148,6 +152,7 @@ fn plate(name: &str, thickness: f64) -> Plate {
         feet: None,
         ribs: Vec::new(),
         sandwich: None,
+        flexural_strength: None,
     }
 }
 

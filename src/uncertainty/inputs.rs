@@ -44,6 +44,12 @@ const PRELOAD: Input = Input {
     place: |at, u| at.preload = even(u),
     reading: |at| at.preload,
 };
+const AXIAL: Input = Input {
+    name: "load along the bolts",
+    remedy: "narrow the range of the load, or hold it by stops and pins",
+    place: |at, u| at.load = even(u),
+    reading: |at| at.load,
+};
 const LOSS: Input = Input {
     name: "settling and relaxation",
     remedy: "re-tighten after settling, lengthen the grip, spare soft layers under the head",
@@ -181,6 +187,16 @@ pub fn inputs(chain: &Chain) -> Vec<Input> {
     }
     if by_method {
         found.push(PRELOAD);
+    }
+    let loaded = joint.fasteners.iter().any(|group| {
+        let lasting = group.axial_load.as_ref().filter(|load| load.lasting);
+        lasting.is_some_and(|load| {
+            let mut cases = joint.service.cases.iter();
+            cases.any(|case| spread(&load.in_case(case.name)))
+        })
+    });
+    if loaded {
+        found.push(AXIAL);
     }
     if joint.losses.is_none() {
         found.push(LOSS);
