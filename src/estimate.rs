@@ -17,11 +17,11 @@ pub use choice::{Choice, Fineness, Watch};
 pub use forces::Strength;
 pub use maps::{field_map, ring_tables};
 pub use results::*;
-pub use window::*;
 pub use temperatures::{
     FacePoint, HeatMap, SectionBolt, SectionPlate, Solid, StackSection, Temperatures, Through,
     heat_map, stack_section,
 };
+pub use window::*;
 
 pub use crate::resistance::RingRow;
 

@@ -24,11 +24,13 @@ pub mod stack;
 pub mod strength;
 pub mod torque;
 
-pub use cautions::{Group, group_cautions, opened, window_cautions};
+pub use cautions::{
+    Group, group_cautions, opened, over_in_service, parts, springs_flat, window_cautions,
+};
+pub use external::{ServiceLoad, Shared};
 pub use force::{Place, clamp_force, force_band};
 pub use limits::{
     LimitUse, Supports, largest_torque, limit_torques, limits, limits_in_service, strength_use,
 };
-pub use external::{ServiceLoad, Shared};
 pub use losses::{Elasticity, Losses, force_in_service};
 pub use stack::{Stack, Strains, guide_settling, stack};

@@ -9,3 +9,4 @@ pub mod number;
 pub mod sweep;
 pub mod table;
 pub mod text;
+mod window;

@@ -8,10 +8,13 @@ mod inputs;
 mod media;
 mod minimum;
 mod sweep;
+mod trials;
+mod window;
 
 pub use inputs::{Input, inputs};
 pub use media::{InMedium, in_media};
-pub use sweep::{SweepOptions, sweep_along, torque_sweep};
+pub use sweep::{CONFIDENCE, SweepOptions, sweep_along, torque_sweep};
+pub use window::{FIRST, LAST, NOTHING, REQUIREMENT};
 
 use rayon::prelude::*;
 
@@ -124,11 +127,6 @@ impl Draws {
     /// Band of the source-to-sink resistance.
     pub(crate) fn source_to_sink(&self, nominal: f64) -> Band {
         self.band(nominal, |drawn| drawn.source_to_sink)
-    }
-
-    /// Band of the contact-only resistance.
-    pub(crate) fn contact(&self, nominal: f64) -> Band {
-        self.band(nominal, |drawn| drawn.contact)
     }
 
     /// Band of what the joint adds.

@@ -130,8 +130,7 @@ impl Group {
     /// losses, the high corner.
     pub fn clamp(&self, joint: &Joint, fastener: &Fastener, case: usize) -> Bounds {
         let band = preload::force_band(fastener);
-        let after =
-            |force: f64, share: f64| self.balance(joint, (case, share), force).max(0.0);
+        let after = |force: f64, share: f64| self.balance(joint, (case, share), force).max(0.0);
         Bounds {
             low: after(band.low, 1.0),
             nominal: after(band.nominal, 0.0),

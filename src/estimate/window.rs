@@ -87,6 +87,8 @@ pub struct TorqueWindow {
     pub plates_fail: bool,
     /// Force that the heat asks for over that which strength allows, where heat is met above strength.
     pub force_ratio: Option<f64>,
+    /// The next thread whose stress area carries that force in the same grade.
+    pub larger_thread: Option<String>,
     /// Changes tried where the window is shut.
     pub trials: Vec<Trial>,
 }

@@ -111,10 +111,7 @@ pub(super) fn check(joint: &Joint, file: &Record, collector: &mut Collector) {
 
 /// Reads the disc springs of a fastener: the outer option is none when they are faulty.
 #[expect(clippy::option_option, reason = "faulty and not stated are two things")]
-pub(super) fn springs(
-    fastener: &Record,
-    collector: &mut Collector,
-) -> Option<Option<DiscSprings>> {
+pub(super) fn springs(fastener: &Record, collector: &mut Collector) -> Option<Option<DiscSprings>> {
     if !fastener.has("disc_springs") {
         return Some(None);
     }

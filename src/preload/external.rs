@@ -133,7 +133,8 @@ mod tests {
             introduction: Bounds::exact(0.5),
         };
         let found = load.on(&ELASTICITY, CLAMP);
-        let close = |found: f64, hand: f64| assert!((found / hand - 1.0).abs() < 1e-9, "{found} {hand}");
+        let close =
+            |found: f64, hand: f64| assert!((found / hand - 1.0).abs() < 1e-9, "{found} {hand}");
         close(found.load_factor.nominal, 0.1);
         close(found.bolt_force, 7200.0);
         close(found.residual.low, 2200.0);

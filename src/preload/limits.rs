@@ -5,9 +5,7 @@ use crate::{
     joint::{Engagement, Fastener, Joint, Tightening},
     preload::{
         brittle::seat_limit,
-        engagement::{
-            PairStrength, ThreadedPart, parent_width, plate_shear_strength, strip_width,
-        },
+        engagement::{PairStrength, ThreadedPart, parent_width, plate_shear_strength, strip_width},
         external::stress_in_service,
         force::{Place, balance, clamp_force, force_band, tool_factor, torsion},
         strength::{
@@ -75,7 +73,10 @@ pub fn unevenness(joint: &Joint, plate: usize) -> Option<f64> {
         plate.bow.map(f64::abs).or(plate.flatness)
     };
     let sides = [plate.checked_sub(1), Some(plate)];
-    let heights = sides.into_iter().flatten().filter(|side| side + 1 < joint.plates.len());
+    let heights = sides
+        .into_iter()
+        .flatten()
+        .filter(|side| side + 1 < joint.plates.len());
     let heights = heights.filter_map(|side| match (stated(side), stated(side + 1)) {
         (None, None) => None,
         (one, other) => Some(one.unwrap_or(0.0) + other.unwrap_or(0.0)),
@@ -204,7 +205,9 @@ pub fn limit_torques(fastener: &Fastener, supports: &Supports) -> Vec<(&'static 
             force_at_stress(&fastener.thread, twist, most).unwrap_or(f64::NEG_INFINITY),
         )
     });
-    let forces = by_stress.into_iter().chain(force_limits(fastener, supports));
+    let forces = by_stress
+        .into_iter()
+        .chain(force_limits(fastener, supports));
     forces
         .map(|(name, force)| {
             let torque = balance.torque(force) / tool_factor(tightening, place);

@@ -318,7 +318,8 @@ mod tests {
         assert!(STIFF.after(before, lost).abs() < 1e-9);
         let after = sprung.after(before, lost);
         let springs = sprung.springs.expect("the stack of this test");
-        let lengths = 6e-9 * (after - before) + springs.deflection(after) - springs.deflection(before);
+        let lengths =
+            6e-9 * (after - before) + springs.deflection(after) - springs.deflection(before);
         assert!((lengths - lost).abs() < 1e-14, "{lengths}");
         // By the tangent alone: 6 µm over 6 nm/N and the springs' own compliance.
         let tangent = before + lost / (6e-9 + springs.compliance(before));

@@ -81,8 +81,7 @@ impl Stack {
     }
 
     fn spring_length(&self) -> f64 {
-        self.springs
-            .map_or(0.0, |springs| springs.free_length())
+        self.springs.map_or(0.0, |springs| springs.free_length())
     }
 }
 

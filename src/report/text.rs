@@ -14,6 +14,7 @@ use crate::{
 use anstyle::{AnsiColor, Style};
 use std::fmt::Write;
 
+mod axial;
 mod pressure;
 mod rings;
 mod temperatures;
@@ -132,6 +133,7 @@ fn bolts(case: &CaseResult, detail: Detail) -> String {
         ],
         &rows,
     );
+    text.push_str(&axial::loads(case));
     text.push_str(&pressure::field(case, detail));
     text
 }
@@ -142,6 +144,7 @@ fn groups(bolts: &[BoltResult]) -> Vec<(String, Vec<&BoltResult>)> {
         one.force == other.force
             && one.force_in_service == other.force_in_service
             && one.strength_use == other.strength_use
+            && one.axial == other.axial
             && one.largest_torque == other.largest_torque
     };
     let mut runs: Vec<(usize, Vec<&BoltResult>)> = Vec::new();

@@ -25,7 +25,10 @@ pub static AXIAL_LOAD: Section = Section {
     meaning: "load from outside along each bolt, pulling the plates apart",
     shorthand: Some("value"),
     fields: &[
-        load("value", "load of each bolt in every case that states none of its own"),
+        load(
+            "value",
+            "load of each bolt in every case that states none of its own",
+        ),
         load("hot", "load of each bolt in the hot case").default("as value"),
         load("cold", "load of each bolt in the cold case").default("as value"),
         field(
