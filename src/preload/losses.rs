@@ -270,7 +270,7 @@ mod tests {
         springs: None,
     };
 
-    /// Four sets of one disc 16 × 8.2 × 0.9 mm, cone 0.35 mm: flat at about 1.4 kN.
+    /// Four sets of one disc 16 × 8.2 × 0.9 mm, cone 0.35 mm: flat at 1.32 kN.
     fn sprung() -> Elasticity {
         Elasticity {
             springs: Some(SpringStack {
