@@ -47,10 +47,7 @@ fn swept(joint: &Joint, steps: usize, confidence: f64) -> TorqueSweep {
         to: Some(3.0),
         steps,
         confidence,
-        chain: Options {
-            draws: 64,
-            seed: 1,
-        },
+        chain: Options { draws: 64, seed: 1 },
     };
     torque_sweep(joint, &options).expect("a sweep")
 }
@@ -70,7 +67,10 @@ fn fine(joint: &Joint, confidence: f64) -> (f64, f64) {
 /// A rise that a middle torque just meets at the high end of the band.
 fn middling() -> String {
     let sweep = swept(&joint("1000 K", "0 N"), 5, 0.9);
-    let high = sweep.points[2].source_to_sink.high.expect("draws were made");
+    let high = sweep.points[2]
+        .source_to_sink
+        .high
+        .expect("draws were made");
     format!("{} K", 20.0 * high * 1.02)
 }
 
@@ -127,10 +127,7 @@ fn strength_and_separation_end_where_a_fine_sweep_says() {
         .expect("a load asks for force");
     assert!((separation.torque - strength.low.torque).abs() < 1e-12);
     // 1.7 N·m clamps at least about 1.35 kN: 720 N and the losses need some 0.9 to 1.6 N·m.
-    assert!(
-        (0.5..2.0).contains(&separation.torque),
-        "{separation:?}"
-    );
+    assert!((0.5..2.0).contains(&separation.torque), "{separation:?}");
     let Range { low, high } = window.both.expect("1000 K are met by any torque");
     assert_eq!(low, strength.low);
     assert_eq!(high, strength.high);

@@ -436,7 +436,9 @@ impl<'a> Chain<'a> {
             torque,
             side: Side::Most,
         });
-        least.into_iter().chain(most).collect()
+        let mut limits: Vec<TorqueLimit> = least.into_iter().chain(most).collect();
+        limits.sort_by(|one, other| one.torque.total_cmp(&other.torque));
+        limits
     }
 
     /// Force at assembly of a group.

@@ -154,6 +154,26 @@ mod tests {
     }
 
     #[test]
+    fn load_under_the_heads_gives_the_stiffness_constant_of_the_textbook() {
+        // Shigley, chapter 8, problems 8-22 and 8-24: k_b and k_m as printed (MN/m; Mlbf/in), C to three digits.
+        for (bolt, members, printed) in [(466.8, 1379.0, 0.253), (3.94, 10.79, 0.267)] {
+            let elasticity = Elasticity {
+                compliance: Compliance {
+                    bolt: 1.0 / bolt,
+                    plates: 1.0 / members,
+                },
+                springs: None,
+            };
+            let load = ServiceLoad {
+                load: Bounds::exact(1.0),
+                introduction: Bounds::exact(1.0),
+            };
+            let found = load.on(&elasticity, CLAMP).load_factor.nominal;
+            assert!((found - printed).abs() < 6e-4, "{found} {printed}");
+        }
+    }
+
+    #[test]
     fn each_end_takes_its_own_worst_introduction() {
         let unknown = ServiceLoad {
             load: Bounds {

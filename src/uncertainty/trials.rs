@@ -53,10 +53,8 @@ fn opened(sought: &Sought<'_>, best: Option<f64>) -> Result<Option<Range>, Failu
         known.push((torque, sought.excess_at(torque)?));
     }
     let found = sought.heat(known)?;
-    Ok(found.into_iter().next().and_then(|range| {
-        // Ends that are those of the room carry its names.
-        range.shared(room)
-    }))
+    // An end that both share carries the name of the room.
+    Ok(found.first().and_then(|range| room.shared(*range)))
 }
 
 /// Half-width of friction that is measured on the lot.

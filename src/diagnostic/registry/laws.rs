@@ -435,7 +435,8 @@ pub(super) const ENTRIES: &[Entry] = &[
              springs follow no more.",
             "State `disc_springs`. Choose them so that the nominal clamp force lies near 75 % of the force at \
              flat, and enough sets that their travel is several times what is lost. A flat washer between \
-             them and a soft plate spares the plate.",
+             them and a soft plate spares the plate. Heat through the shank has to pass the springs: where that \
+             path matters, `shank_path = false` leaves it out.",
         ],
     ),
     Law {

@@ -72,6 +72,19 @@ fn energy(disc: &Disc, deflection: f64) -> f64 {
     over(&|radius, height| PI * radius * modulus * strain(centre, radius, height).powi(2))
 }
 
+/// Factor of the bending term over that of the standard, which takes the factor of the cone for both:
+/// ln δ/6 over (δ+1)/(δ−1) − 2/ln δ. One for narrow discs, 1.007 at δ 2, 1.03 at δ 4.
+fn own_factor(disc: &Disc) -> f64 {
+    let ratio = disc.outer_diameter / disc.inner_diameter;
+    ratio.ln() / 6.0 / ((ratio + 1.0) / (ratio - 1.0) - 2.0 / ratio.ln())
+}
+
+#[test]
+fn the_standard_leaves_less_than_a_percent_of_the_bending_at_usual_ratios() {
+    assert!((own_factor(&disc(A50)) - 1.0074).abs() < 1e-3);
+    assert!((own_factor(&disc([40.0, 10.0, 1.0, 0.1])) - 1.03).abs() < 5e-3);
+}
+
 #[test]
 fn an_integral_of_the_hoop_strain_gives_the_same_force() {
     // The force is the slope of the energy over the deflection. 400 columns by the midpoint rule and
@@ -86,7 +99,8 @@ fn an_integral_of_the_hoop_strain_gives_the_same_force() {
         for share in [0.1, 0.5, 0.9] {
             let (at, step) = (share * disc.cone_height, 2e-4 * disc.cone_height);
             let slope = (energy(&disc, at + step) - energy(&disc, at - step)) / (2.0 * step);
-            let force = disc.force(at);
+            let turn = disc.scale() * at / disc.thickness * (own_factor(&disc) - 1.0);
+            let force = disc.force(at) + turn;
             assert!(
                 (slope / force - 1.0).abs() < 1e-4,
                 "{sizes:?} {share}: {slope} {force}"
@@ -108,7 +122,8 @@ fn without_a_cone_it_is_a_plate_that_stiffens() {
     let lever = 12.3e-3_f64;
     let modulus = 206e9 / (1.0 - 0.09);
     let hand = 2.0 * PI * modulus * (3e-3_f64).powi(3) * ratio.ln() / (12.0 * lever * lever);
-    assert!((slope / hand - 1.0).abs() < 1e-9, "{slope} {hand}");
+    let own = own_factor(&flat) * slope;
+    assert!((own / hand - 1.0).abs() < 1e-9, "{own} {hand}");
 }
 
 #[test]
