@@ -10,7 +10,7 @@ use crate::{catalog, diagnostic::Assumption};
 
 pub use flatness_map::FlatnessMap;
 pub use heat::{CooledPart, Cooling, Edge, HeatedZone, Heating, Sink, Source, Zone};
-pub use loads::{AxialLoad, DiscSprings, InsertHold};
+pub use loads::{AxialLoad, DiscSprings, InsertHold, LockWasher};
 pub use plates::{
     Bimetal, Coating, Facing, Feet, Finish, Outline, Patch, Plate, Rib, Sag, Underside,
 };
@@ -209,8 +209,8 @@ pub struct Fastener {
     pub axial_load: Option<AxialLoad>,
     /// Disc springs under head or nut.
     pub disc_springs: Option<DiscSprings>,
-    /// Whether a split spring washer lies under the head.
-    pub split_washer: bool,
+    /// The spring washer under the head.
+    pub lock_washer: LockWasher,
     /// How its inserts are held.
     pub insert_hold: InsertHold,
     /// Places in joint coordinates, m.

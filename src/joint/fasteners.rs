@@ -4,7 +4,7 @@ use crate::{
     catalog::{self, Grade, Thread},
     diagnostic::Fault,
     joint::{
-        Engagement, Fastener, Flange, MOST_PLACES, MOST_PLATES,
+        Engagement, Fastener, Flange, LockWasher, MOST_PLACES, MOST_PLATES,
         collector::{Collector, Wording, fault},
         isolating,
         lands::{self, Land, Site},
@@ -113,9 +113,11 @@ fn group(
     let axial_load = loads::axial(record, collector);
     let disc_springs = loads::springs(record, collector);
     let insert_hold = loads::insert(record, collector);
-    let split_washer = record
-        .flag("split_washer")
-        .or((!record.has("split_washer")).then_some(false));
+    let lock_washer = match record.flag("split_washer") {
+        None if record.has("split_washer") => None,
+        Some(true) => Some(LockWasher::Split),
+        Some(false) | None => Some(LockWasher::None),
+    };
     let shank_path = record
         .flag("shank_path")
         .or((!record.has("shank_path")).then_some(true));
@@ -140,7 +142,7 @@ fn group(
             isolating: isolating?,
             axial_load: axial_load?,
             disc_springs: disc_springs?,
-            split_washer: split_washer?,
+            lock_washer: lock_washer?,
             insert_hold: insert_hold?,
             places: site
                 .as_ref()?

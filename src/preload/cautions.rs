@@ -3,7 +3,7 @@
 use crate::{
     catalog::MaterialKind,
     diagnostic::Caution,
-    joint::{Engagement, Fastener, Friction, Tightening, TorqueTightening},
+    joint::{Engagement, Fastener, Friction, LockWasher, Tightening, TorqueTightening},
     preload::{
         engagement::engagement_check,
         force::{Place, force_band},
@@ -217,7 +217,7 @@ fn seats(group: &Group<'_>) -> Vec<Caution> {
 
 /// What a split spring washer does not do.
 fn split_washer(group: &Group<'_>) -> Option<Caution> {
-    group.fastener.split_washer.then(|| {
+    (group.fastener.lock_washer == LockWasher::Split).then(|| {
         caution(
             "preload/split-washer",
             format!(

@@ -6,8 +6,8 @@ use crate::{
     catalog::{Datum, Grade, Material, MaterialKind, Status, Thread},
     joint::{
         Bounds, Compliance, ConeRule, ConeShape, Contact, Engagement, FaceFriction, Fastener,
-        Finish, Friction, HeadModel, InsertHold, Joint, Law, Medium, Outline, Plate, Seat, Service,
-        Sink, Source, Tightening, TorqueTightening, Zone,
+        Finish, Friction, HeadModel, InsertHold, Joint, Law, LockWasher, Medium, Outline, Plate,
+        Seat, Service, Sink, Source, Tightening, TorqueTightening, Zone,
     },
 };
 
@@ -91,7 +91,7 @@ pub fn m6() -> Fastener {
         isolating: None,
         axial_load: None,
         disc_springs: None,
-        split_washer: false,
+        lock_washer: LockWasher::None,
         insert_hold: InsertHold::default(),
         places: vec![[20e-3, 20e-3], [60e-3, 20e-3]],
     }

@@ -67,7 +67,7 @@ impl Disc {
         self.force(self.cone_height)
     }
 
-    /// 4E/(1−ν²) · t⁴/(K₁ D_e²), N.
+    /// `4E/(1−ν²) · t⁴/(K₁ D_e²)`, N.
     fn scale(&self) -> f64 {
         let ratio = self.outer_diameter / self.inner_diameter;
         let slender = (ratio - 1.0) / ratio;

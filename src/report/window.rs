@@ -220,9 +220,8 @@ fn opening(window: &TorqueWindow) -> Vec<String> {
                 format!(" ({name} of the same grade is the next that has it)")
             });
         lines.push(format!(
-            "by the limits, not solved: {:.1} times the force, which takes {:.1} times the stress area{larger} or as many \
+            "by the limits, not solved: {ratio:.1} times the force, which takes {ratio:.1} times the stress area{larger} or as many \
              times the bolts; a filler asks for less",
-            ratio, ratio
         ));
     } else if window.heat.as_ref().is_some_and(Vec::is_empty) && !window.plates_fail {
         lines.push(

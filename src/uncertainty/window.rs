@@ -59,7 +59,7 @@ pub(super) fn quantiles(confidence: f64) -> [f64; 2] {
     [0.5 - 0.5 * confidence, 0.5 + 0.5 * confidence]
 }
 
-impl<'a> Sought<'a> {
+impl Sought<'_> {
     /// How far the unfavourable end of the band lies beyond what is required, relative; at most zero
     /// where it is met. None where nothing is required, or it needs heat and none is stated.
     pub(super) fn excess(&self, nominal: &Drawn, draws: Option<&Draws>) -> Option<f64> {

@@ -52,6 +52,16 @@ pub struct DiscSprings {
     pub series: u32,
 }
 
+/// The spring washer under a head.
+#[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
+pub enum LockWasher {
+    /// There is none.
+    #[default]
+    None,
+    /// A split ring, which keeps no force.
+    Split,
+}
+
 /// How an insert is held in its plate.
 #[derive(Clone, Copy, Debug, Default, PartialEq)]
 pub struct InsertHold {
