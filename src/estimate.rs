@@ -8,6 +8,8 @@ mod maps;
 mod results;
 mod surfaces;
 mod temperatures;
+mod torques;
+mod window;
 
 pub(crate) use chain::LARGE_ERROR;
 pub use chain::{Chain, DrawPlan, Drawn, Meeting, State, Workspace};
@@ -19,6 +21,7 @@ pub use temperatures::{
     FacePoint, HeatMap, SectionBolt, SectionPlate, Solid, StackSection, Temperatures, Through,
     heat_map, stack_section,
 };
+pub use window::*;
 
 pub use crate::resistance::RingRow;
 
@@ -63,6 +66,8 @@ const MOST_PLACE: f64 = 1.0 - 1e-15;
 pub struct Realisation {
     /// Friction of the lot of all bolts, place.
     pub friction: f64,
+    /// Load from outside along the bolts, place.
+    pub load: f64,
     /// Torque tool, place.
     pub tool: f64,
     /// Given preload or scatter of the method, place.

@@ -22,6 +22,7 @@ mod heating;
 mod inserts;
 mod isolating;
 mod lands;
+mod loads;
 mod maps;
 mod materials;
 mod medium;
@@ -263,6 +264,7 @@ fn assembled(file: &Record, tables: &mut Tables<'_>, collector: &mut Collector) 
         assumptions: Vec::new(),
     };
     cold::check(&joint, file, collector);
+    loads::check(&joint, file, collector);
     Some(joint)
 }
 

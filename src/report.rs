@@ -10,3 +10,4 @@ pub mod number;
 pub mod sweep;
 pub mod table;
 pub mod text;
+mod window;

@@ -14,7 +14,9 @@ mod ranking;
 mod remedies;
 mod shares;
 mod sweep;
+mod trials;
 mod verification;
+mod window;
 mod worst;
 
 pub use answer::Answer;
@@ -23,8 +25,9 @@ pub use indices::{Bases, FEWEST_BASES, Index, Share, indices};
 pub use inputs::{Input, Moves, inputs};
 pub use media::{InMedium, in_media};
 pub use ranking::{Ranked, Ranking, RankingOptions, Scale, Target, ranking};
-pub use sweep::{SweepOptions, sweep_along, torque_sweep};
+pub use sweep::{CONFIDENCE, SweepOptions, sweep_along, torque_sweep};
 pub use verification::{Verification, verification};
+pub use window::{FIRST, LAST, NOTHING, REQUIREMENT};
 
 use crate::{
     estimate::{
@@ -105,13 +108,18 @@ fn sampling(draws: &Draws) -> Option<Sampling> {
 fn drivers(draws: &Draws) -> Vec<Driver> {
     let shares = draws.shares.correlated();
     let inputs = draws.inputs.iter().zip(shares);
-    let mut drivers: Vec<Driver> = inputs
-        .map(|(input, share)| Driver {
-            input: input.name,
-            share,
-            remedy: input.remedy,
-        })
-        .collect();
+    let mut drivers: Vec<Driver> = Vec::new();
+    for (input, share) in inputs {
+        // Inputs of one name, such as the scatter of every bolt, are independent: their shares add.
+        match drivers.iter_mut().find(|known| known.input == input.name) {
+            Some(known) => known.share += share,
+            None => drivers.push(Driver {
+                input: input.name,
+                share,
+                remedy: input.remedy,
+            }),
+        }
+    }
     drivers.sort_by(|one, other| other.share.total_cmp(&one.share));
     drivers
 }

@@ -6,7 +6,9 @@ mod heat;
 mod tornado;
 
 use ringsum::{
-    estimate::{Band, FieldMap, TorquePoint, TorqueSweep},
+    estimate::{
+        Band, End, FieldMap, Range, Side, TorqueLimit, TorquePoint, TorqueSweep, TorqueWindow,
+    },
     figures::{
         CumulativePlot, Curve, DetailKind, Drawing, FigureError, Format, PlanBolt, PlanDetail,
         PlanMap, PlanOutline, PlanPair, PlanShape, RadiusMark, png, render, svg,
@@ -170,6 +172,44 @@ fn sweep() -> TorqueSweep {
             })
             .collect(),
         required: Some((0.8, Limit::Most)),
+        window: TorqueWindow {
+            confidence: Some(0.9),
+            knee: Some(1.4),
+            limits: vec![
+                TorqueLimit {
+                    name: "separation",
+                    torque: 0.6,
+                    side: Side::Least,
+                },
+                TorqueLimit {
+                    name: "yield of the bolt",
+                    torque: 2.9,
+                    side: Side::Most,
+                },
+                TorqueLimit {
+                    name: "proof load",
+                    torque: 3.6,
+                    side: Side::Most,
+                },
+            ],
+            strength: None,
+            heat: Some(Vec::new()),
+            both: Some(Range {
+                low: End {
+                    torque: 1.1,
+                    by: "the requirement",
+                },
+                high: End {
+                    torque: 2.9,
+                    by: "yield of the bolt",
+                },
+            }),
+            trusted: true,
+            plates_fail: false,
+            force_ratio: None,
+            larger_thread: None,
+            trials: Vec::new(),
+        },
         cautions: Vec::new(),
     }
 }

@@ -6,6 +6,8 @@ mod advice;
 mod fillers;
 #[path = "reader/heat.rs"]
 mod heat;
+#[path = "reader/loads.rs"]
+mod loads;
 #[path = "reader/plates.rs"]
 mod plates;
 #[path = "reader/sandwich.rs"]

@@ -55,7 +55,7 @@ def resistances(u):
              + head * bolt["friction_radius"])
     assembly = np.maximum((bolt["torque"] * (1 + bolt["tolerance"] * tool) - bolt["running"]) / lever, 0.0)
     losses = meets["losses"][0]
-    service = np.maximum(assembly * (1 - loss * losses["relaxation"]) - loss * losses["settling"]
+    service = np.maximum(assembly * (1 - loss * losses["relaxation"]) * (1 - loss * losses["interaction"]) - loss * losses["settling"]
                          + losses["temperature"], 0.0)
     force = np.log(bolt["bolts"] * service / gauge["force"])
     # Faces to conductance at the pressure of the gauge.

@@ -202,6 +202,23 @@ pub fn format(path: &Path) -> Result<Format, Trouble> {
     }
 }
 
+/// A share of the draws from the command line, 1.
+pub fn confidence(text: &str) -> Result<f64, String> {
+    let share = units::parse(text, Quantity::Ratio).map_err(|fault| match fault.help {
+        Some(help) => format!("{}; {help}", fault.message),
+        None => fault.message,
+    })?;
+    if (LEAST_SHARE..=MOST_SHARE).contains(&share) {
+        Ok(share)
+    } else {
+        Err("it must lie between 10 % and 99 %, for example \"90 %\"".to_owned())
+    }
+}
+
+/// Least and most share of the draws that a band may hold: the draws tell no more.
+const LEAST_SHARE: f64 = 0.1;
+const MOST_SHARE: f64 = 0.99;
+
 /// The name that was probably meant.
 pub fn nearest(name: &str, known: &[String]) -> Option<String> {
     diagnostic::nearest(name, known.iter().map(String::as_str))

@@ -11,7 +11,7 @@ use crate::{
     },
     figures::Drawing,
     report::{json, sweep},
-    uncertainty::SweepOptions,
+    uncertainty::{CONFIDENCE, SweepOptions},
 };
 use clap::Args;
 use std::path::PathBuf;
@@ -35,6 +35,9 @@ pub struct Torque {
     #[arg(long, value_name = "N", default_value_t = 1,
           value_parser = clap::value_parser!(u32).range(1..))]
     group: u32,
+    /// Share of the draws that the band holds and the window rests on: "90 %" is from 5 % to 95 %
+    #[arg(long, value_name = "SHARE", value_parser = chain::confidence)]
+    confidence: Option<f64>,
     #[command(flatten)]
     field: Field,
     #[command(flatten)]
@@ -88,6 +91,7 @@ impl Torque {
             from: self.from,
             to: self.to,
             steps: self.steps as usize,
+            confidence: self.confidence.unwrap_or(CONFIDENCE),
             chain: self.draws.options(),
         };
         let task = Task {

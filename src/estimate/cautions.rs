@@ -1,5 +1,6 @@
 //! Every caution of an estimate, gathered along the chain and put in order of gravity.
 
+mod brittle;
 mod elastic;
 mod faces;
 mod feet;
@@ -12,7 +13,9 @@ use field::GAS_MATTERS;
 use crate::{
     catalog,
     diagnostic::{Caution, registry},
-    estimate::{CaseResult, Chain, Failure, Realisation, State, chain::LARGE_ERROR, group_label},
+    estimate::{
+        CaseResult, Chain, Failure, Realisation, State, chain::LARGE_ERROR, forces, group_label,
+    },
     joint::{FillerKind, Finish, Joint, Medium, Plate, Sink},
     preload,
 };
@@ -73,12 +76,34 @@ fn preload_cautions(chain: &Chain) -> Vec<Caution> {
         found.extend(preload::window_cautions(&group));
         for (case, named) in joint.service.cases.iter().enumerate() {
             let force = preload::force_band(fastener).low;
-            let left = prepared
-                .losses(joint, case, &Realisation::losing(1.0))
-                .balance(force);
+            let left = prepared.balance(joint, (case, &Realisation::losing(1.0)), force);
             let label = format!("{name}, {} case, lowest force", named.name);
             found.extend(preload::opened(&label, left));
+            let clamp = prepared.clamp(joint, fastener, case);
+            found.extend(preload::springs_flat(
+                &label_of(&name, named.name),
+                (fastener, clamp),
+            ));
+            let shared = prepared.shared(joint, fastener, case);
+            found.extend(shared.and_then(|shared| {
+                preload::parts(&label_of(&name, named.name), (fastener, &shared))
+            }));
         }
+        let in_service = prepared.in_service(joint, fastener);
+        found.extend(preload::over_in_service(&name, &in_service));
+        found.extend(brittle::plates(joint, &name, fastener));
+    }
+    if forces::on_soft_layer(joint) && joint.bolts().count() > 1 {
+        let loss = joint.losses.and_then(|losses| losses.interaction);
+        let loss = loss.unwrap_or(forces::INTERACTION[1]);
+        found.push(caution(
+            "preload/soft-layer",
+            format!(
+                "a layer that yields lies between the plates: a bolt loses force while the others are tightened ({:.0} \
+                 % taken) and afterwards as the layer creeps; tighten crosswise in several passes, and once more later",
+                100.0 * loss
+            ),
+        ));
     }
     for case in &joint.service.cases {
         let apart = (case.temperature - joint.service.assembly_temperature).abs();
@@ -93,6 +118,10 @@ fn preload_cautions(chain: &Chain) -> Vec<Caution> {
         }
     }
     found
+}
+
+fn label_of(name: &str, case: &str) -> String {
+    format!("{name}, {case} case")
 }
 
 /// A word on a numerical error that is larger than it should be.

@@ -28,8 +28,9 @@ use crate::{
     diagnostic::Caution,
     estimate::{
         Band, BoltResult, Choice, Failure, Fineness, InterfaceResult, PressureResult, Realisation,
-        RingRow, Strength, Watch,
+        RingRow, Side, Strength, TorqueLimit, Watch,
         forces::{self, Group},
+        torques::SEPARATION,
     },
     joint::{Fastener, Joint, Medium, Tightening},
     pressure::Cone,
@@ -132,6 +133,28 @@ impl<'a> Chain<'a> {
     /// Groups whose preload is stated keep it.
     pub fn with_torque(&self, group: usize, torque: f64) -> Result<Chain<'static>, Failure> {
         self.with(with_torque(self.joint(), group, torque))
+    }
+
+    /// The same joint with a group tightened or graded otherwise; plates, cells and grid are shared, so
+    /// that places, holes and seats must be the same.
+    pub(crate) fn with_fastener(
+        &self,
+        group: usize,
+        fastener: Fastener,
+    ) -> Result<Chain<'static>, Failure> {
+        let mut joint = self.joint().clone();
+        joint.fasteners[group] = fastener;
+        let prepared = Group::new(&joint, &joint.fasteners[group])?;
+        let mut chain = Chain {
+            joint: Cow::Owned(joint),
+            groups: self.groups.clone(),
+            group_of: self.group_of.clone(),
+            model: self.model.clone(),
+            error: self.error.clone(),
+        };
+        chain.groups[group] = prepared;
+        chain.model = chain.levelled()?;
+        Ok(chain)
     }
 
     /// The same joint in vacuum; plates, cells and grid are shared.
@@ -309,17 +332,23 @@ impl<'a> Chain<'a> {
 
     /// Every bolt of a case, at the nominal state.
     pub fn bolts(&self, case: usize, state: &State) -> Vec<BoltResult> {
+        let strengths: Vec<Strength> = self
+            .groups()
+            .map(|(fastener, group)| group.strength(self.joint(), fastener))
+            .collect();
         self.joint
             .bolts()
             .enumerate()
             .map(|(bolt, (fastener, at))| {
                 let group = &self.groups[self.group_of[bolt]];
-                let strength = group.strength(fastener);
+                let strength = &strengths[self.group_of[bolt]];
                 BoltResult {
                     at,
                     force: forces::assembly_band(fastener),
                     force_in_service: group.service_band(self.joint(), fastener, case),
+                    axial: group.shared(self.joint(), fastener, case),
                     strength_use: strength.equivalent,
+                    use_in_service: strength.in_service,
                     largest_torque: strength.largest_torque.map(|(torque, _)| torque),
                     contact_radius: match &self.model {
                         Model::Cone(model) => model.cones()[bolt].contact_radius,
@@ -401,7 +430,27 @@ impl<'a> Chain<'a> {
 
     /// What the bolts of a group bear.
     pub fn strength(&self, group: usize) -> Strength {
-        self.groups[group].strength(&self.joint.fasteners[group])
+        self.groups[group].strength(&self.joint, &self.joint.fasteners[group])
+    }
+
+    /// Every limit of strength and separation on the torque of a group, torque rising.
+    pub fn torque_limits(&self, group: usize) -> Vec<TorqueLimit> {
+        let (prepared, fastener) = (&self.groups[group], &self.joint.fasteners[group]);
+        let least = prepared.least_torque(&self.joint, fastener);
+        let least = least.map(|torque| TorqueLimit {
+            name: SEPARATION,
+            torque,
+            side: Side::Least,
+        });
+        let most = prepared.most_torques(&self.joint, fastener);
+        let most = most.into_iter().map(|(name, torque)| TorqueLimit {
+            name,
+            torque,
+            side: Side::Most,
+        });
+        let mut limits: Vec<TorqueLimit> = least.into_iter().chain(most).collect();
+        limits.sort_by(|one, other| one.torque.total_cmp(&other.torque));
+        limits
     }
 
     /// Force at assembly of a group.

@@ -6,10 +6,11 @@ use crate::{
         registry::{self, Gravity},
     },
     estimate::{
-        Temperatures,
+        Temperatures, TorqueWindow,
         cautions::{FLATNESS_DECIDES, GAP_IGNORED},
     },
     joint::{Joint, Limit, RequirementKind},
+    preload::Shared,
     resistance::Path,
 };
 
@@ -88,6 +89,10 @@ pub struct BoltResult {
     pub force_in_service: Band,
     /// Equivalent stress over yield: nominal and at the highest force; none without a yield strength.
     pub strength_use: Option<[f64; 2]>,
+    /// What a load from outside does in this case; none where none is stated.
+    pub axial: Option<Shared>,
+    /// Equivalent stress in service over yield at the worst case; none without a yield strength.
+    pub use_in_service: Option<f64>,
     /// Largest torque that passes every limit, N m; none when the preload is given.
     pub largest_torque: Option<f64>,
     /// Radius where contact ends, m.
@@ -523,6 +528,8 @@ pub struct TorqueSweep {
     pub points: Vec<TorquePoint>,
     /// Requirement in K/W of source to sink, where one can be put so.
     pub required: Option<(f64, Limit)>,
+    /// The torques that heat and strength allow.
+    pub window: TorqueWindow,
     /// Cautions.
     pub cautions: Vec<Caution>,
 }

@@ -248,10 +248,11 @@ fn hardness(
     match (microhardness, hardness) {
         (Some([c1, c2]), _) => Ok((
             Hardness::Micro { c1: *c1, c2: *c2 },
-            microhardness_spread.as_ref().map_or(
-                Factor::uniform(MICROHARDNESS_FACTOR),
-                |datum| Factor::of(datum, MICROHARDNESS_FACTOR),
-            ),
+            microhardness_spread
+                .as_ref()
+                .map_or(Factor::uniform(MICROHARDNESS_FACTOR), |datum| {
+                    Factor::of(datum, MICROHARDNESS_FACTOR)
+                }),
         )),
         (None, Some(datum)) => Ok((
             Hardness::Meyer(datum.value),

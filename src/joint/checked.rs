@@ -3,6 +3,7 @@
 mod bounds;
 mod flatness_map;
 mod heat;
+mod loads;
 mod plates;
 mod sandwich;
 mod uncertain;
@@ -12,6 +13,7 @@ use crate::{catalog, diagnostic::Assumption, numerics::distribution::Shape};
 pub use bounds::Bounds;
 pub use flatness_map::FlatnessMap;
 pub use heat::{CooledPart, Cooling, Edge, HeatedZone, Heating, Sink, Source, Zone};
+pub use loads::{AxialLoad, DiscSprings, InsertHold, LockWasher};
 pub use plates::{
     Bimetal, Coating, Facing, Feet, Finish, Outline, Patch, Plate, Rib, Sag, Underside,
 };
@@ -180,6 +182,14 @@ pub struct Fastener {
     pub shank_path: bool,
     /// Washers that keep the heat of the plates from head and nut.
     pub isolating: Option<Isolating>,
+    /// A load from outside along each bolt.
+    pub axial_load: Option<AxialLoad>,
+    /// Disc springs under head or nut.
+    pub disc_springs: Option<DiscSprings>,
+    /// The spring washer under the head.
+    pub lock_washer: LockWasher,
+    /// How its inserts are held.
+    pub insert_hold: InsertHold,
     /// Places in joint coordinates, m.
     pub places: Vec<[f64; 2]>,
 }
@@ -492,6 +502,9 @@ pub struct Losses {
     /// Relaxation in the long term as a fraction of the clamp force; exactly zero where none is
     /// stated.
     pub long_term: Bounds,
+    /// What a bolt loses while the others are tightened, as a fraction of its clamp force; none stands
+    /// for the judgement on its joint.
+    pub interaction: Option<f64>,
 }
 
 /// Whether bolts are tightened again after they have settled.

@@ -3,6 +3,7 @@
 mod fasteners;
 mod filler;
 mod heat;
+mod loads;
 mod plates;
 mod sandwich;
 
@@ -18,6 +19,7 @@ use crate::{
 pub use fasteners::{ENGAGEMENT, FASTENER, FRICTION, PATTERN, TORQUE};
 pub use filler::{FILLER, MEASURED, MEASURED_LAW};
 pub use heat::{CONDUCTIVITY, COOLED, HEATED, ISOLATING, RADIATION};
+pub use loads::{AXIAL_LOAD, DISC_SPRINGS};
 pub use plates::{
     BIMETAL, BOW, CUTOUT, FEET, FINISH, FOOT, MATERIAL, MATERIAL_INLINE, MICROHARDNESS, PLATE,
     PLATING, RIB, SAG,
@@ -391,6 +393,14 @@ pub static LOSSES: Section = Section {
             "4",
         )
         .within(0.0, 8.0),
+        field(
+            "interaction",
+            Kind::Quantity(Quantity::Ratio),
+            "what a bolt loses while the others are tightened after it",
+            "\"5 %\"",
+        )
+        .within(0.0, 0.9)
+        .default("5 % where several bolts clamp, 10 % on a soft layer"),
     ],
 };
 

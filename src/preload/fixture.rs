@@ -6,8 +6,8 @@ use crate::{
     catalog::{Datum, Grade, Material, MaterialKind, Status, Thread},
     joint::{
         Bolts, Bounds, Compliance, ConeRule, ConeShape, Contact, Engagement, FaceFriction,
-        Fastener, Finish, Friction, HeadModel, Joint, Law, Medium, Outline, Plate, Seat, Service,
-        Sink, Source, Tightening, TorqueTightening, Zone,
+        Fastener, Finish, Friction, HeadModel, InsertHold, Joint, Law, LockWasher, Medium, Outline,
+        Plate, Seat, Service, Sink, Source, Tightening, TorqueTightening, Zone,
     },
     numerics::distribution::Shape,
 };
@@ -89,6 +89,10 @@ pub fn m6() -> Fastener {
         head_plate: 0,
         shank_path: true,
         isolating: None,
+        axial_load: None,
+        disc_springs: None,
+        lock_washer: LockWasher::None,
+        insert_hold: InsertHold::default(),
         places: vec![[20e-3, 20e-3], [60e-3, 20e-3]],
     }
 }
@@ -150,6 +154,7 @@ fn plate(name: &str, thickness: f64) -> Plate {
         feet: None,
         ribs: Vec::new(),
         sandwich: None,
+        flexural_strength: None,
     }
 }
 

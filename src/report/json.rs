@@ -14,6 +14,7 @@ use serde_json::{Map, Value, json};
 
 mod pressure;
 mod temperatures;
+mod window;
 
 pub(super) use pressure::differences;
 
@@ -164,6 +165,8 @@ fn bolt(bolt: &BoltResult) -> Value {
         "force": band(&bolt.force),
         "force_in_service": band(&bolt.force_in_service),
         "strength_use": strength_use(bolt.strength_use),
+        "use_in_service": bolt.use_in_service,
+        "axial": bolt.axial.as_ref().map(window::axial),
         "largest_torque": bolt.largest_torque,
         "contact_radius": bolt.contact_radius,
         "contact_conductance": bolt.contact_conductance,
@@ -343,6 +346,7 @@ pub fn torque(sweep: &TorqueSweep) -> Value {
             json!({ "resistance": resistance, "bound": bound_key(bound) })
         }),
         "points": points,
+        "window": window::window(&sweep.window),
         "cautions": cautions(&sweep.cautions),
     })
 }

@@ -7,6 +7,7 @@ use crate::{
         number::{band, four, percent, plain},
         table::{Side, aligned},
         text::{Detail, cautions},
+        window,
     },
 };
 use std::fmt::Write;
@@ -94,6 +95,8 @@ pub fn torque(sweep: &TorqueSweep) -> String {
         ],
         &rows,
     );
+    let torques: Vec<f64> = sweep.points.iter().map(|point| point.torque).collect();
+    let table = window::interleaved(&table, &torques, &window::marks(sweep));
     let mut text = format!("{}\n", plain(&sweep.title));
     let _ = writeln!(
         text,
@@ -123,6 +126,7 @@ pub fn torque(sweep: &TorqueSweep) -> String {
         );
     }
     text.push_str(&advice(sweep, best, stated));
+    text.push_str(&window::statement(sweep));
     if let Some((resistance, bound)) = sweep.required {
         let side = match bound {
             Limit::Most => "at most",

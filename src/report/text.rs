@@ -15,6 +15,7 @@ use crate::{
 use anstyle::{AnsiColor, Style};
 use std::fmt::Write;
 
+mod axial;
 mod pressure;
 mod rings;
 mod temperatures;
@@ -147,6 +148,7 @@ fn bolts(case: &CaseResult, detail: Detail) -> String {
         ],
         &rows,
     );
+    text.push_str(&axial::loads(case));
     text.push_str(&pressure::field(case, detail));
     text
 }
@@ -157,6 +159,7 @@ fn groups(bolts: &[BoltResult]) -> Vec<(String, Vec<&BoltResult>)> {
         one.force == other.force
             && one.force_in_service == other.force_in_service
             && one.strength_use == other.strength_use
+            && one.axial == other.axial
             && one.largest_torque == other.largest_torque
     };
     let mut runs: Vec<(usize, Vec<&BoltResult>)> = Vec::new();

@@ -47,6 +47,8 @@ pub(super) struct Task<'a> {
     pub(super) inputs: &'a [Input],
     pub(super) answers: &'a [Answer],
     pub(super) options: &'a Options,
+    /// Quantiles at the ends of a band.
+    pub(super) quantiles: [f64; 2],
     /// An input that stays at its nominal value.
     pub(super) known: Option<usize>,
 }
@@ -58,6 +60,15 @@ pub fn draws(
     (case, answers): (usize, &[Answer]),
     options: &Options,
 ) -> Result<Draws, Failure> {
+    draws_between(chain, (case, answers, QUANTILES), options)
+}
+
+/// The same with bands between other quantiles.
+pub(super) fn draws_between(
+    chain: &Chain,
+    (case, answers, quantiles): (usize, &[Answer], [f64; 2]),
+    options: &Options,
+) -> Result<Draws, Failure> {
     let plan = chain.draw_plan(case)?;
     let inputs = inputs(chain);
     Task {
@@ -65,6 +76,7 @@ pub fn draws(
         inputs: &inputs,
         answers,
         options,
+        quantiles,
         known: None,
     }
     .drawn()
@@ -103,7 +115,7 @@ impl Task<'_> {
                     .par_iter()
                     .map(|answer| {
                         let values = part(answer);
-                        QUANTILES.map(|p| Tail::around(p, &values, reach))
+                        self.quantiles.map(|p| Tail::around(p, &values, reach))
                     })
                     .collect();
             }

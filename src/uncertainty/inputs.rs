@@ -102,6 +102,12 @@ const PRELOAD: Known = Known {
     place: |at, u| at.preload = even(u),
     reading: |at| at.preload,
 };
+const AXIAL: Known = Known {
+    name: "load along the bolts",
+    remedy: "narrow the range of the load, or hold it by stops and pins",
+    place: |at, u| at.load = even(u),
+    reading: |at| at.load,
+};
 const LOSS: Known = Known {
     name: "settling and relaxation",
     remedy: "re-tighten after settling, lengthen the grip, spare soft layers under the head",
@@ -389,6 +395,16 @@ fn forces(chain: &Chain) -> Vec<Input> {
     }
     if torques.iter().any(|torque| torque.running_spread.is_some()) {
         found.push(RUNNING.bounded(Moves::LessForce));
+    }
+    let loaded = joint.fasteners.iter().any(|group| {
+        let lasting = group.axial_load.as_ref().filter(|load| load.lasting);
+        lasting.is_some_and(|load| {
+            let mut cases = joint.service.cases.iter();
+            cases.any(|case| load.in_case(case.name).is_spread())
+        })
+    });
+    if loaded {
+        found.push(AXIAL.bounded(Moves::LessForce));
     }
     match joint.losses {
         None => found.push(LOSS.bounded(Moves::LessForce)),

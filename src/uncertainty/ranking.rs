@@ -249,6 +249,7 @@ impl Asked<'_> {
             inputs: self.inputs,
             answers: &[self.answer],
             options: &self.draws,
+            quantiles: QUANTILES,
             known,
         };
         let drawn = task.drawn()?;

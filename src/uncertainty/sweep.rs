@@ -1,11 +1,17 @@
 //! Resistance against torque: the band at every torque, the limit of strength, the best torque.
 
 use crate::{
-    estimate::{self, Chain, Failure, Options, TorquePoint, TorqueSweep},
+    estimate::{
+        self, Band, CaseResult, Chain, Failure, LARGE_ERROR, Options, TorquePoint, TorqueSweep,
+    },
     joint::{Joint, Limit, Plane, RequirementKind, Tightening},
 };
 
-use super::{Answer, draws, minimum::minimum};
+use super::{
+    Answer,
+    minimum::minimum,
+    window::{Rows, Sought, window},
+};
 
 /// Which torques to try.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -18,12 +24,15 @@ pub struct SweepOptions {
     pub to: Option<f64>,
     /// Number of torques, at least two.
     pub steps: usize,
+    /// Share of the draws that every band holds, about the middle: 0.9 from 5 % to 95 %.
+    pub confidence: f64,
     /// Draws and seed.
     pub chain: Options,
 }
 
-/// What is told of every torque.
-const SWEPT: [Answer; 3] = [Answer::SourceToSink, Answer::Contact, Answer::AddedByJoint];
+/// Share of the draws that a band holds unless told otherwise.
+pub const CONFIDENCE: f64 = 0.9;
+
 /// Steps that are sooner solved one by one than through a table over the force.
 const FEW_STEPS: usize = 4;
 /// Share of the stated torque at which a sweep starts unless told otherwise.
@@ -64,15 +73,25 @@ pub fn sweep_along(chain: &Chain, options: &SweepOptions) -> Result<TorqueSweep,
         return Err(Failure::SweepRange { from, to });
     }
     // First of all, so that every torque knows the error of the grid.
-    let cautions = estimate::nominal(chain, &options.chain)?.cautions;
+    let nominal = estimate::nominal(chain, &options.chain)?;
+    let fine = |case: &CaseResult| case.numerical_error <= LARGE_ERROR;
+    let trusted = nominal.cases.iter().all(fine) && !nominal.flatness_decides();
+    let cautions = nominal.cautions;
     // Without draws every torque is solved for itself, which is soon done.
     if options.steps > FEW_STEPS && options.chain.draws > 0 {
         chain.expect_torques((case, options.group), [from, to])?;
     }
-    let points = (0..options.steps)
+    let sought = Sought {
+        chain,
+        options,
+        case,
+        range: [from, to],
+    };
+    let rows = (0..options.steps)
         .map(|step| from + (to - from) * step as f64 / (options.steps - 1) as f64)
-        .map(|torque| point(chain, options, (case, torque)))
-        .collect::<Result<Vec<TorquePoint>, Failure>>()?;
+        .map(|torque| point(&sought, torque))
+        .collect::<Result<Vec<(TorquePoint, Option<f64>)>, Failure>>()?;
+    let (points, excess): (Vec<TorquePoint>, Vec<Option<f64>>) = rows.into_iter().unzip();
     let required = required(joint);
     let minimum = match required {
         Some((_, Limit::Least)) => None,
@@ -82,6 +101,15 @@ pub fn sweep_along(chain: &Chain, options: &SweepOptions) -> Result<TorqueSweep,
         }
         _ => None,
     };
+    let window = window(
+        &sought,
+        &Rows {
+            points: &points,
+            excess: &excess,
+            minimum: minimum.map(|minimum| (minimum.torque, minimum.added_by_joint)),
+            trusted,
+        },
+    )?;
     let best = match minimum {
         Some(minimum) => Some(minimum.torque),
         None => best_of(&points, required),
@@ -95,6 +123,7 @@ pub fn sweep_along(chain: &Chain, options: &SweepOptions) -> Result<TorqueSweep,
         minimum,
         points,
         required,
+        window,
         case: joint.service.cases[case].name,
         field: chain.field_name(),
         resolution: chain.resolution_name(),
@@ -144,37 +173,32 @@ pub(super) fn worst_case(chain: &Chain) -> Result<usize, Failure> {
         .unwrap_or(0))
 }
 
-fn point(
-    stated: &Chain,
-    options: &SweepOptions,
-    (case, torque): (usize, f64),
-) -> Result<TorquePoint, Failure> {
-    let chain = stated.with_torque(options.group, torque)?;
-    let nominal = chain.state(case, &estimate::Realisation::default())?;
-    let path = &nominal.path;
-    let (source_to_sink, contact, added) = (
-        path.source_to_sink,
-        path.contact.recip(),
-        path.added_by_joint,
-    );
+/// One row, and how far it lies beyond what is required.
+fn point(sought: &Sought<'_>, torque: f64) -> Result<(TorquePoint, Option<f64>), Failure> {
+    let Sought { options, case, .. } = *sought;
+    let chain = sought.chain.with_torque(options.group, torque)?;
+    let nominal = chain.nominal_answers(case)?;
     let strength = chain.strength(options.group);
     let draws = match options.chain.draws {
         0 => None,
-        _ => Some(draws(&chain, (case, &SWEPT), &options.chain)?),
+        _ => Some(sought.drawn(&chain, &Answer::ALL)?),
     };
-    let band = |answer: Answer, nominal: f64| {
-        let drawn = draws.as_ref().map(|draws| draws.band(answer, nominal));
-        drawn.unwrap_or(estimate::Band::nominal(nominal))
+    let band = |answer: Answer| {
+        let value = answer.of(&nominal);
+        let drawn = draws.as_ref().map(|draws| draws.band(answer, value));
+        drawn.unwrap_or(Band::nominal(value))
     };
-    Ok(TorquePoint {
+    let point = TorquePoint {
         torque,
         force: chain.force(options.group),
-        source_to_sink: band(Answer::SourceToSink, source_to_sink),
-        contact: band(Answer::Contact, contact),
-        added_by_joint: band(Answer::AddedByJoint, added),
+        source_to_sink: band(Answer::SourceToSink),
+        contact: band(Answer::Contact),
+        added_by_joint: band(Answer::AddedByJoint),
         strength_use: strength.equivalent,
         passes: strength.passes,
-    })
+    };
+    let excess = sought.excess(&nominal, draws.as_ref());
+    Ok((point, excess))
 }
 
 /// The requirement as a source-to-sink resistance, where it can be put so.

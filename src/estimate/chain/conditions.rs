@@ -125,15 +125,18 @@ impl<'a> Outlook<'a> {
     }
 
     /// What moves with a draw, as data: faces, plates, and the losses of every group at the whole
-    /// share of the guide values.
+    /// share of the guide values, as forces of a bolt without springs.
     pub(super) fn tables(&self) -> Value {
         let joint = self.chain.joint();
         let losses = |(_, group): (_, &Group)| {
             let losses = group.losses(joint, self.case, &Realisation::losing(1.0));
+            let compliance = group.elasticity.compliance;
+            let force = |length: f64| length / (compliance.bolt + compliance.plates);
             json!({
-                "settling": losses.settling,
+                "settling": force(losses.settling),
                 "relaxation": losses.relaxation,
-                "temperature": losses.temperature,
+                "interaction": losses.interaction,
+                "temperature": force(losses.growth),
             })
         };
         let plates = self.conducting.iter().map(Conducting::table);

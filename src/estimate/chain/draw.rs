@@ -72,6 +72,12 @@ impl Chain<'_> {
         }
     }
 
+    /// The answers of a case at nominal.
+    pub(crate) fn nominal_answers(&self, case: usize) -> Result<Drawn, Failure> {
+        let state = self.state(case, &Realisation::default())?;
+        Ok(Drawn::of(&state.path))
+    }
+
     /// The plan of the draws of a case; on a solved field this works out their surfaces, once.
     pub fn draw_plan(&self, case: usize) -> Result<DrawPlan<'_>, Failure> {
         let (outlook, field) = match &self.model {

@@ -15,6 +15,8 @@ pub struct Plate {
     pub name: String,
     /// Material, from the catalogue or the file.
     pub material: Material,
+    /// Strength in bending of a brittle plate, Pa, where it is stated.
+    pub flexural_strength: Option<f64>,
     /// Thickness, m.
     pub thickness: f64,
     /// Outline in plan, in the plate's own coordinates.

@@ -38,6 +38,13 @@ pub static PLATE: Section = Section {
             "conductivity in the plane and through the thickness where they differ, in place of the material's",
             "{ in_plane = \"400 W/(m·K)\", through = \"5 W/(m·K)\" }",
         ),
+        field(
+            "flexural_strength",
+            Kind::Quantity(Quantity::Pressure),
+            "strength in bending of a plate of ceramic, glass or a semiconductor",
+            "\"300 MPa\"",
+        )
+        .within(1e5, 1e11),
         length("thickness", "thickness", "\"5 mm\"")
             .within(1e-6, 10.0)
             .required(),

@@ -106,7 +106,9 @@ impl ElasticPlan<'_> {
             None => {
                 let shift = self.spread.shift(&conditions.forces);
                 let there = self.flat.at(&to);
-                self.moved(std::array::from_fn(|reading| there[reading] + shift[reading]))
+                self.moved(std::array::from_fn(|reading| {
+                    there[reading] + shift[reading]
+                }))
             }
         };
         moved
