@@ -49,7 +49,7 @@ struct Sums {
     /// Of both samples: values, and their squares.
     value: f64,
     square: f64,
-    /// Of each input: f(B)(f(A_B) − f(A)), and (f(A) − f(A_B))².
+    /// Of each input: the sums over points of `S_i` and of `T_i`.
     inputs: Vec<[f64; 2]>,
 }
 

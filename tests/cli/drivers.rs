@@ -29,8 +29,8 @@ fn drivers_are_ranked_with_shares_band_and_remedy() {
     for part in [
         "share %",
         "in total",
-        "if known",
-        "narrower",
+        "known K/W",
+        "less",
         "what to do about it",
         "seed 1",
     ] {
