@@ -31,11 +31,11 @@ Examples:
 pub struct Drivers {
     /// Joint file; - reads standard input
     file: PathBuf,
-    /// The answer: source_to_sink, contact, added, node_to_node or rise
+    /// The answer: source to sink unless told otherwise
     #[arg(
         long,
         value_enum,
-        value_name = "ANSWER",
+        value_name = "source_to_sink|contact|added|node_to_node|rise",
         default_value = "source_to_sink",
         hide_possible_values = true
     )]

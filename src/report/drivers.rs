@@ -6,13 +6,17 @@ use serde_json::{Value, json};
 
 use crate::{
     report::{
-        number::{four, optional, percent, plain},
+        number::{cut, four, optional, percent, plain, wrapped},
         table::{Side, aligned},
-        text::wrapped_after,
+        text::{WIDTH, wrapped_after},
     },
     uncertainty::{Index, Ranking, Scale, Share},
 };
 
+/// Widest name in the table, characters.
+const NAME: usize = 34;
+/// Share of no input alone above which few extreme draws are behind the shares.
+const MUCH: f64 = 0.5;
 /// Total share below which an input is not worth a remedy.
 const WORTH_A_LINE: f64 = 0.01;
 
@@ -28,7 +32,7 @@ pub fn text(ranking: &Ranking) -> String {
                 input.alone[0].max(input.alone[1]),
             ];
             vec![
-                input.input.to_owned(),
+                cut(input.input, NAME),
                 share(&input.index.first),
                 share(&input.index.total),
                 four(low),
@@ -40,7 +44,7 @@ pub fn text(ranking: &Ranking) -> String {
         })
         .collect();
     let heading = |name: &str| format!("{name} {unit}");
-    let (alone, known) = (heading("alone"), heading("if known"));
+    let (alone, known) = (heading("alone"), heading("known"));
     let right = Side::Right;
     let table = aligned(
         &[
@@ -51,7 +55,7 @@ pub fn text(ranking: &Ranking) -> String {
             ("\nhigh", right),
             (&format!("{known}\nlow"), right),
             ("\nhigh", right),
-            ("band\nnarrower", right),
+            ("band\nless", right),
         ],
         &rows,
     );
@@ -74,10 +78,18 @@ pub fn text(ranking: &Ranking) -> String {
     for line in [
         format!("share {scale}, ± its 95 % interval; of its own: what goes if this input alone is known; in total: what is left if all others are"),
         format!("{} belongs to no input alone", percent(ranking.interaction)),
-        "alone: this input at its 5 % and 95 %, all others nominal; if known: the band if this input were known to be nominal".to_owned(),
+        "alone: this input at its 5 % and 95 %, all others nominal; known: the band if this input were known to be nominal".to_owned(),
+        if ranking.interaction > MUCH {
+            "few extreme draws hold most of the variance: go by the last columns, which look at the band from 5 % to 95 %".to_owned()
+        } else {
+            String::new()
+        },
         draws(ranking),
     ] {
-        let _ = writeln!(text, "{}", wrapped_after(&line, 2));
+        if line.is_empty() {
+            continue;
+        }
+        let _ = writeln!(text, "{}", wrapped(&line, WIDTH, 2));
     }
     text.push_str(&remedies(ranking));
     text
@@ -121,11 +133,9 @@ fn remedies(ranking: &Ranking) -> String {
 /// A share in percent with its interval.
 fn share(share: &Share) -> String {
     if share.value.is_finite() {
-        format!(
-            "{:.1} ± {:.1}",
-            100.0 * share.value,
-            100.0 * share.confidence
-        )
+        // No minus before a zero.
+        let tenth = |value: f64| (1000.0 * value).round() / 10.0 + 0.0;
+        format!("{:.1} ± {:.1}", tenth(share.value), tenth(share.confidence))
     } else {
         "–".to_owned()
     }
