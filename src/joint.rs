@@ -22,6 +22,7 @@ mod heating;
 mod inserts;
 mod isolating;
 mod lands;
+mod limits;
 mod maps;
 mod materials;
 mod medium;
@@ -42,6 +43,7 @@ mod syntax;
 mod tightening;
 mod tree;
 mod walk;
+mod zones;
 
 use toml::de::DeTable;
 
@@ -234,11 +236,15 @@ fn assembled(file: &Record, tables: &mut Tables<'_>, collector: &mut Collector) 
         fasteners::read_alone(file, collector);
         return None;
     };
+    limits::plates(&plates, collector);
     let source = heating::read(&plates[0], collector);
     let sink = cooling::read(&plates[plates.len() - 1], collector);
     sandwich::cooled(&plates[plates.len() - 1], sink.as_ref(), collector);
     let contact = contact::read(file, &plates, collector);
     let fasteners = fasteners::read(file, (&plates, &own), collector);
+    if let Some(fasteners) = &fasteners {
+        limits::seats(file, fasteners, collector);
+    }
     let losses = contact::losses(file, collector);
     let plates: Option<Vec<Plate>> = plates
         .into_iter()
@@ -258,6 +264,7 @@ fn assembled(file: &Record, tables: &mut Tables<'_>, collector: &mut Collector) 
         assumptions: Vec::new(),
     };
     cold::check(&joint, file, collector);
+    zones::check(&joint, file, collector);
     Some(joint)
 }
 

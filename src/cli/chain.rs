@@ -48,11 +48,26 @@ pub fn torque_sweep(task: &Task, options: &SweepOptions) -> Result<TorqueSweep, 
     task.watched(|| uncertainty::sweep_along(&chain, options))
 }
 
+/// An interface from the command line: its index, from 1 as it is counted there.
+pub fn interface(joint: &Joint, asked: usize) -> Result<usize, Trouble> {
+    let known = joint.interfaces();
+    if (1..=known).contains(&asked) {
+        return Ok(asked - 1);
+    }
+    let names: Vec<String> = (0..known)
+        .map(|index| format!("{} {}", index + 1, joint.interface_name(index)))
+        .collect();
+    Err(Trouble::usage(
+        format!("there is no interface {asked}; the joint has {known}"),
+        format!("count from the warm side: {}", names.join(", ")),
+    ))
+}
+
 /// Whether the rings of every bolt are asked for.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub enum Rings {
-    /// They are.
-    Told,
+    /// They are, in an interface counted from 0.
+    Told(usize),
     /// They are not.
     Left,
 }
@@ -79,7 +94,7 @@ pub fn estimate(
         Ok(Estimated {
             estimate: uncertainty::along(&chain, options)?,
             rings: match rings {
-                Rings::Told => estimate::ring_tables(&chain)?,
+                Rings::Told(interface) => estimate::ring_tables(&chain, interface)?,
                 Rings::Left => Vec::new(),
             },
             media: uncertainty::in_media(&chain, media, options)?,
@@ -90,6 +105,14 @@ pub fn estimate(
 /// The word of a medium from the command line, if a joint file would take it.
 pub fn medium(word: &str) -> Result<String, String> {
     Medium::named(word, None).map(|medium| medium.word())
+}
+
+/// The first medium that stands twice in a list of words as [`medium`] gives them.
+pub fn twice(words: &[String]) -> Option<&String> {
+    let before = |index: usize| words[..index].contains(&words[index]);
+    (0..words.len())
+        .find(|index| before(*index))
+        .map(|index| &words[index])
 }
 
 /// Media by their words, gases at the pressure of the joint's own gas where it has one.
@@ -104,6 +127,8 @@ pub fn media(joint: &Joint, words: &[String]) -> Vec<Medium> {
 pub struct Fields {
     /// Nominal results.
     pub nominal: Estimate,
+    /// Which interface is shown, counted from 0 at the warm side.
+    pub interface: usize,
     /// Pressure, gap and conductance over the plan.
     pub map: FieldMap,
     /// Rings of every bolt.
@@ -114,15 +139,16 @@ pub struct Fields {
     pub section: Option<StackSection>,
 }
 
-/// What the figures show, maps `columns` points wide.
-pub fn fields(task: &Task, columns: usize) -> Result<Fields, Trouble> {
+/// What the figures show of an interface, maps `columns` points wide.
+pub fn fields(task: &Task, interface: usize, columns: usize) -> Result<Fields, Trouble> {
     let chain = task.chain()?;
     task.watched(|| {
         Ok(Fields {
             nominal: uncertainty::along(&chain, &Options { draws: 0, seed: 1 })?,
-            map: estimate::field_map(&chain, columns)?,
-            rings: estimate::ring_tables(&chain)?,
-            heat: estimate::heat_map(&chain, columns)?,
+            map: estimate::field_map(&chain, interface, columns)?,
+            interface,
+            rings: estimate::ring_tables(&chain, interface)?,
+            heat: estimate::heat_map(&chain, interface, columns)?,
             section: estimate::stack_section(&chain)?,
         })
     })

@@ -101,11 +101,11 @@ mod tests {
         let whole = Region::sample(&plan, &|_| true);
         let field = |[x, y]: [f64; 2]| 50.0 + 3.0 * x - 2.0 * y;
         let found = nodal(&plan, &whole, &means(&plan, &whole, field));
-        for column in 0..plan.columns() {
+        for (column, found) in found.iter().enumerate() {
             let place = plan.place(column);
             let inside = (1.5..7.5).contains(&place[0]) && (1.5..5.5).contains(&place[1]);
             if inside {
-                let off = found[column] - field(place);
+                let off = found - field(place);
                 // Rounding of sums of 1024 samples.
                 assert!(off.abs() < 1e-10, "{place:?}: {off}");
             }
@@ -120,13 +120,21 @@ mod tests {
         let at = plan.column(12, 2);
         let off = |values: &[f64]| (values[at] - field(plan.place(at))).abs();
         assert!(off(&told) > 0.05, "{}", off(&told));
-        assert!(off(&found) < 0.1 * off(&told), "{} {}", off(&found), off(&told));
+        assert!(
+            off(&found) < 0.1 * off(&told),
+            "{} {}",
+            off(&found),
+            off(&told)
+        );
     }
 
     #[test]
     fn the_force_stays() {
         let plan = Plan::new(lines(12, 1.07), lines(12, 1.05));
-        let hole = Disc { centre: [7.0, 6.0], radius: 1.4 };
+        let hole = Disc {
+            centre: [7.0, 6.0],
+            radius: 1.4,
+        };
         let faces = Region::sample(&plan, &|_| true).without(&Region::discs(&plan, &[hole]));
         // A cone of pressure that ends inside the faces and has a hole.
         let cone = |[x, y]: [f64; 2]| (4.0 - (x - 7.0).hypot(y - 6.0)).max(0.0);
@@ -138,7 +146,12 @@ mod tests {
         assert!(found.iter().all(|value| *value >= 0.0));
         // Beyond the edge of contact the means reach a cell far; the values less.
         let touched = |values: &[f64]| values.iter().filter(|value| **value > 0.0).count();
-        assert!(touched(&found) < touched(&told), "{} {}", touched(&found), touched(&told));
+        assert!(
+            touched(&found) < touched(&told),
+            "{} {}",
+            touched(&found),
+            touched(&told)
+        );
         // And they are nearer to the field where it is smooth.
         let worst = |values: &[f64]| -> f64 {
             (0..plan.columns())
@@ -147,16 +160,27 @@ mod tests {
                 .map(|(column, place)| (values[column] - cone(place)).abs())
                 .fold(0.0, f64::max)
         };
-        assert!(worst(&found) < worst(&told), "{} {}", worst(&found), worst(&told));
+        assert!(
+            worst(&found) < worst(&told),
+            "{} {}",
+            worst(&found),
+            worst(&told)
+        );
     }
 
     #[test]
     fn an_even_field_is_left_as_it_is() {
         let plan = Plan::new(lines(6, 1.2), lines(6, 1.0));
-        let hole = Disc { centre: [3.0, 3.0], radius: 1.1 };
+        let hole = Disc {
+            centre: [3.0, 3.0],
+            radius: 1.1,
+        };
         let faces = Region::sample(&plan, &|_| true).without(&Region::discs(&plan, &[hole]));
         let weights = faces.weights(&plan);
-        let told: Vec<f64> = weights.iter().map(|w| if *w > 0.0 { 5.0 } else { 0.0 }).collect();
+        let told: Vec<f64> = weights
+            .iter()
+            .map(|w| if *w > 0.0 { 5.0 } else { 0.0 })
+            .collect();
         for (found, told) in nodal(&plan, &faces, &told).iter().zip(&told) {
             assert!((found - told).abs() < 1e-12, "{found} {told}");
         }

@@ -14,7 +14,9 @@ use crate::{
     pressure::elastic::{Field, Mesh},
     resistance::{
         self, Path,
-        columns::{Body, Conduction, Conductivity, Heat, Meeting, Perfect, Slab, Stack, Terminals, nodal},
+        columns::{
+            Body, Conduction, Conductivity, Heat, Meeting, Perfect, Slab, Stack, Terminals, nodal,
+        },
     },
 };
 
