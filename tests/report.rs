@@ -659,7 +659,7 @@ fn torque_sweep() -> TorqueSweep {
         stated: 1.7,
         largest: Some((2.04, "yield of the bolt")),
         best: Some(1.0),
-        at_stated: 0.165,
+        at_stated: 0.11,
         at_limit: None,
         minimum: None,
         points: vec![point(1.0, 0.1), point(1.6, 0.11), point(2.2, 0.12)],

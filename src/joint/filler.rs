@@ -252,14 +252,15 @@ fn foil(
 /// A bond line is what a paste was squeezed to: it was liquid then and fills what the bolts open. It is a
 /// layer where the file tells what only a layer has, or names a pad, foil or bond.
 fn unstated(record: &Record, known: Option<&FillerRecord>) -> &'static str {
-    let solid = ["thickness", "boundary", "modulus"]
-        .iter()
-        .any(|key| record.has(key));
+    let solid = ["boundary", "modulus"].iter().any(|key| record.has(key));
+    let squeezed = record.has("bond_line") && !solid;
+    if record.has("thickness") || record.has("bond_line") && solid {
+        return "layer";
+    }
     match known.map(|known| known.model.as_str()) {
-        _ if solid => "layer",
-        Some("fluid") if !record.has("bond_line") => "fluid",
+        Some("fluid") if !squeezed => "fluid",
         Some("fluid" | "paste") => "paste",
-        None if record.has("bond_line") => "paste",
+        None if squeezed => "paste",
         _ => "layer",
     }
 }

@@ -282,6 +282,7 @@ fn a_zone_far_smaller_than_a_cell_is_told() {
         .and_then(|rest| rest.split(' ').next());
     let low: f64 = low.expect("a number").parse().expect("a number");
     assert!((14.0..17.0).contains(&low), "{text}");
-    assert_eq!(of(&heated("20 mm"), code), None);
+    // Wider than 1.5 thicknesses of 4 mm.
+    assert_eq!(of(&heated("7 mm"), code), None);
     assert_eq!(gravity(code), Gravity::Range);
 }
