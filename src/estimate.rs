@@ -304,6 +304,7 @@ fn case_result(chain: &Chain, case: usize, numerical_error: f64) -> Result<CaseR
     Ok(CaseResult {
         name: named.name,
         sink_temperature: named.temperature,
+        sink_radiates: joint.sink.radiates(),
         bolts,
         pressure,
         interfaces,

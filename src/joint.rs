@@ -22,6 +22,7 @@ mod heating;
 mod inserts;
 mod isolating;
 mod lands;
+mod limits;
 mod loads;
 mod maps;
 mod materials;
@@ -44,6 +45,7 @@ mod tightening;
 mod tree;
 mod uncertainty;
 mod walk;
+mod zones;
 
 use toml::de::DeTable;
 
@@ -236,11 +238,15 @@ fn assembled(file: &Record, tables: &mut Tables<'_>, collector: &mut Collector) 
         fasteners::read_alone(file, collector);
         return None;
     };
+    limits::plates(&plates, collector);
     let source = heating::read(&plates[0], collector);
     let sink = cooling::read(&plates[plates.len() - 1], collector);
     sandwich::cooled(&plates[plates.len() - 1], sink.as_ref(), collector);
     let contact = contact::read(file, &plates, collector);
     let fasteners = fasteners::read(file, (&plates, &own), collector);
+    if let Some(fasteners) = &fasteners {
+        limits::seats(file, fasteners, collector);
+    }
     let losses = contact::losses(file, collector);
     let bolts_scatter = uncertainty::bolts(file, collector);
     let names: Vec<String> = plates.iter().map(|plate| plate.name.clone()).collect();
@@ -265,6 +271,7 @@ fn assembled(file: &Record, tables: &mut Tables<'_>, collector: &mut Collector) 
     };
     cold::check(&joint, file, collector);
     loads::check(&joint, file, collector);
+    zones::check(&joint, file, collector);
     Some(joint)
 }
 

@@ -156,6 +156,8 @@ fn sweep() -> TorqueSweep {
         stated: 2.2,
         largest: Some((2.9, "yield of the bolt")),
         best: Some(2.8),
+        at_stated: 0.165,
+        at_limit: None,
         minimum: None,
         points: (1..=16)
             .map(|k| {

@@ -63,6 +63,7 @@ fn case(name: &'static str, sink_temperature: f64) -> CaseResult {
     CaseResult {
         name,
         sink_temperature,
+        sink_radiates: false,
         bolts: vec![bolt; 6],
         interfaces: vec![interface()],
         pressure: PressureResult {
@@ -670,6 +671,8 @@ fn torque_sweep() -> TorqueSweep {
         stated: 1.7,
         largest: Some((2.04, "yield of the bolt")),
         best: Some(1.0),
+        at_stated: 0.11,
+        at_limit: None,
         minimum: None,
         points: vec![point(1.0, 0.1), point(1.6, 0.11), point(2.2, 0.12)],
         required: Some((0.115, Limit::Most)),

@@ -288,6 +288,8 @@ pub struct FillerRecord {
     pub thinnest: Option<Datum>,
     /// Modulus of a layer under pressure over its whole face, Pa.
     pub modulus: Option<Datum>,
+    /// Hardness of a foil that yields under asperities, Pa.
+    pub hardness: Option<Datum>,
     /// (pressure, Pa; area resistance, m² K/W).
     pub points: Vec<(f64, f64)>,
     /// Whether it creeps so that bolts need tightening again.

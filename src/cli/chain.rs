@@ -55,11 +55,26 @@ pub fn ranking(task: &Task, options: &RankingOptions) -> Result<Ranking, Trouble
     task.watched(|| uncertainty::ranking(&chain, options))
 }
 
+/// An interface from the command line: its index, from 1 as it is counted there.
+pub fn interface(joint: &Joint, asked: usize) -> Result<usize, Trouble> {
+    let known = joint.interfaces();
+    if (1..=known).contains(&asked) {
+        return Ok(asked - 1);
+    }
+    let names: Vec<String> = (0..known)
+        .map(|index| format!("{} {}", index + 1, joint.interface_name(index)))
+        .collect();
+    Err(Trouble::usage(
+        format!("there is no interface {asked}; the joint has {known}"),
+        format!("count from the warm side: {}", names.join(", ")),
+    ))
+}
+
 /// Whether the rings of every bolt are asked for.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub enum Rings {
-    /// They are.
-    Told,
+    /// They are, in an interface counted from 0.
+    Told(usize),
     /// They are not.
     Left,
 }
@@ -96,7 +111,7 @@ pub fn estimate(task: &Task, options: &Options, beside: &Beside) -> Result<Estim
         Ok(Estimated {
             estimate: uncertainty::along(&chain, options)?,
             rings: match beside.rings {
-                Rings::Told => estimate::ring_tables(&chain)?,
+                Rings::Told(interface) => estimate::ring_tables(&chain, interface)?,
                 Rings::Left => Vec::new(),
             },
             media: uncertainty::in_media(&chain, beside.media, options)?,
@@ -113,6 +128,14 @@ pub fn medium(word: &str) -> Result<String, String> {
     Medium::named(word, None).map(|medium| medium.word())
 }
 
+/// The first medium that stands twice in a list of words as [`medium`] gives them.
+pub fn twice(words: &[String]) -> Option<&String> {
+    let before = |index: usize| words[..index].contains(&words[index]);
+    (0..words.len())
+        .find(|index| before(*index))
+        .map(|index| &words[index])
+}
+
 /// Media by their words, gases at the pressure of the joint's own gas where it has one.
 pub fn media(joint: &Joint, words: &[String]) -> Vec<Medium> {
     let pressure = joint.service.medium.pressure();
@@ -125,6 +148,8 @@ pub fn media(joint: &Joint, words: &[String]) -> Vec<Medium> {
 pub struct Fields {
     /// Nominal results.
     pub nominal: Estimate,
+    /// Which interface is shown, counted from 0 at the warm side.
+    pub interface: usize,
     /// Pressure, gap and conductance over the plan.
     pub map: FieldMap,
     /// Rings of every bolt.
@@ -135,15 +160,16 @@ pub struct Fields {
     pub section: Option<StackSection>,
 }
 
-/// What the figures show, maps `columns` points wide.
-pub fn fields(task: &Task, columns: usize) -> Result<Fields, Trouble> {
+/// What the figures show of an interface, maps `columns` points wide.
+pub fn fields(task: &Task, interface: usize, columns: usize) -> Result<Fields, Trouble> {
     let chain = task.chain()?;
     task.watched(|| {
         Ok(Fields {
             nominal: uncertainty::along(&chain, &Options { draws: 0, seed: 1 })?,
-            map: estimate::field_map(&chain, columns)?,
-            rings: estimate::ring_tables(&chain)?,
-            heat: estimate::heat_map(&chain, columns)?,
+            map: estimate::field_map(&chain, interface, columns)?,
+            interface,
+            rings: estimate::ring_tables(&chain, interface)?,
+            heat: estimate::heat_map(&chain, interface, columns)?,
             section: estimate::stack_section(&chain)?,
         })
     })

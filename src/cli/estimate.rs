@@ -50,6 +50,9 @@ pub struct Estimate {
     /// Add the rings around every bolt
     #[arg(long)]
     rings: bool,
+    /// Interface of the rings, counted from 1 at the warm side
+    #[arg(long, value_name = "N", default_value_t = 1, requires = "rings")]
+    interface: usize,
     /// Add a table of the same joint in media: vacuum,air,helium
     #[arg(long, value_name = "MEDIA", value_delimiter = ',', value_parser = chain::medium)]
     media: Vec<String>,
@@ -69,6 +72,12 @@ impl Estimate {
     /// Estimates every file, also after one at fault.
     pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
         input::stdin_at_most_once(&self.files)?;
+        if let Some(twice) = chain::twice(&self.media) {
+            return Err(Trouble::usage(
+                format!("`{twice}` is named twice in --media"),
+                "name each medium once",
+            ));
+        }
         let mut outcomes = Vec::new();
         for (index, path) in self.files.iter().enumerate() {
             if !self.json && self.files.len() > 1 {
@@ -104,7 +113,11 @@ impl Estimate {
             choice: self.field.choice()?,
             watch: field::watch(),
         };
-        let rings = if self.rings { Rings::Told } else { Rings::Left };
+        let rings = if self.rings {
+            Rings::Told(chain::interface(&joint, self.interface)?)
+        } else {
+            Rings::Left
+        };
         let media = chain::media(&joint, &self.media);
         let beside = Beside {
             rings,

@@ -27,6 +27,8 @@ const NOTICEABLE: f64 = 40.0;
 const BURNS: f64 = 333.15;
 /// Source to sink this many times the contact-only value is limited by spreading.
 const SPREADING: f64 = 5.0;
+/// Share of source to sink that narrow zones may leave out before it is worth a word.
+const NARROW: f64 = 0.02;
 /// Shanks that carry more than this share of the contact conductance are worth a word.
 const BYPASS: f64 = 0.02;
 
@@ -39,8 +41,8 @@ pub fn gathered(chain: &Chain, cases: &[CaseResult]) -> Result<Vec<Caution>, Fai
     found.extend(preload_cautions(chain));
     found.extend(field::field_cautions(chain, cases));
     found.extend(faces::conductance_cautions(joint, &state, cases));
-    found.extend(faces::material_cautions(joint));
-    found.extend(resistance_cautions(chain, &state, cases));
+    found.extend(faces::material_cautions(joint, cases));
+    found.extend(resistance_cautions(chain, &state, cases)?);
     found.extend(service_cautions(chain, cases)?);
     let mut told: Vec<Caution> = Vec::new();
     for caution in found {
@@ -170,13 +172,30 @@ fn plan_grid_cautions(joint: &Joint, cases: &[CaseResult]) -> Vec<Caution> {
     found
 }
 
-fn resistance_cautions(chain: &Chain, state: &State, cases: &[CaseResult]) -> Vec<Caution> {
+fn resistance_cautions(
+    chain: &Chain,
+    state: &State,
+    cases: &[CaseResult],
+) -> Result<Vec<Caution>, Failure> {
     let mut found = Vec::new();
-    found.extend(
-        cases
-            .first()
-            .and_then(|case| error_caution(chain, case.numerical_error)),
-    );
+    let left_out = chain.left_out()?;
+    if let Some(case) = cases.first() {
+        let whole = case.results.source_to_sink.resistance.nominal;
+        found.extend(error_caution(
+            chain,
+            case.numerical_error - left_out / whole,
+        ));
+        if left_out > NARROW * whole {
+            found.push(caution(
+                "resistance/narrow-zone",
+                format!(
+                    "a heated or cooled zone is narrow against the thickness of its plate: source to sink may read up to \
+                     {left_out:.3} K/W low ({:.0} %), on any grid; what the joint adds is less touched",
+                    100.0 * left_out / whole
+                ),
+            ));
+        }
+    }
     if chain.cells().is_some() {
         found.extend(plan_grid_cautions(chain.joint(), cases));
     }
@@ -205,7 +224,7 @@ fn resistance_cautions(chain: &Chain, state: &State, cases: &[CaseResult]) -> Ve
             ));
         }
     }
-    found
+    Ok(found)
 }
 
 fn service_cautions(chain: &Chain, cases: &[CaseResult]) -> Result<Vec<Caution>, Failure> {

@@ -392,9 +392,14 @@ impl<'a> Chain<'a> {
         }
     }
 
-    /// How the faces meet at a point in joint coordinates, first case at nominal; none off the
-    /// faying faces or in a hole.
+    /// How the faces of the first interface meet at a point in joint coordinates, first case at nominal;
+    /// none off the faying faces or in a hole.
     pub fn met_at(&self, point: [f64; 2], state: &State) -> Option<Meeting> {
+        self.met_in(0, point, state)
+    }
+
+    /// The same in any interface, counted from the warm side; the cone has one.
+    pub fn met_in(&self, interface: usize, point: [f64; 2], state: &State) -> Option<Meeting> {
         match &self.model {
             Model::Cone(model) => {
                 let pressure = model.cells().pressure_at(point, &state.conditions.forces)?;
@@ -403,15 +408,20 @@ impl<'a> Chain<'a> {
                     gap: None,
                 })
             }
-            Model::Elastic(model) => model.met_at(self, point),
+            Model::Elastic(model) => model.met_at(self, (point, interface)),
         }
     }
 
-    /// The rings around one bolt, from the hole outward.
+    /// The rings around one bolt in the first interface, from the hole outward.
     pub fn rings(&self, bolt: usize, state: &State) -> Vec<RingRow> {
+        self.rings_in(0, bolt, state)
+    }
+
+    /// The same in any interface, counted from the warm side; the cone has one.
+    pub fn rings_in(&self, interface: usize, bolt: usize, state: &State) -> Vec<RingRow> {
         match &self.model {
             Model::Cone(model) => model.cells().rings(&state.conditions.load(), bolt),
-            Model::Elastic(model) => model.rings(self, bolt),
+            Model::Elastic(model) => model.rings(self, (bolt, interface)),
         }
     }
 

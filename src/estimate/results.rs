@@ -293,6 +293,8 @@ pub struct CaseResult {
     pub name: &'static str,
     /// Mean sink surface temperature, K.
     pub sink_temperature: f64,
+    /// Whether the sink surface radiates, so that its temperature follows from the heat.
+    pub sink_radiates: bool,
     /// Every bolt in file order.
     pub bolts: Vec<BoltResult>,
     /// The pressure field; in a stack that of the first interface.
@@ -524,6 +526,10 @@ pub struct TorqueSweep {
     pub best: Option<f64>,
     /// The lowest point of the curve between swept torques, where it has one inside the window.
     pub minimum: Option<Minimum>,
+    /// Source to sink at the stated torque itself, K/W.
+    pub at_stated: f64,
+    /// The joint at the torque where strength ends, where that is the best and stands between two rows.
+    pub at_limit: Option<Minimum>,
     /// Points, torque rising.
     pub points: Vec<TorquePoint>,
     /// Requirement in K/W of source to sink, where one can be put so.

@@ -144,6 +144,8 @@ fn sweep(stated: f64, largest: f64, required: f64, size: f64) -> TorqueSweep {
         stated,
         largest: Some((largest, "pressure under the head")),
         best: Some(3.0),
+        at_stated: 0.165,
+        at_limit: None,
         minimum: None,
         points: (1..=20)
             .map(|k| {

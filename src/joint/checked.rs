@@ -414,7 +414,7 @@ impl Filler {
     /// Checked: `a_layer_of_known_modulus_is_a_bed_of_springs`.
     pub fn stiffness(&self) -> Option<f64> {
         match self.kind {
-            FillerKind::Layer { .. } | FillerKind::Table { .. } => {
+            FillerKind::Layer { .. } | FillerKind::Foil { .. } | FillerKind::Table { .. } => {
                 Some(self.modulus? / self.thickness?)
             }
             FillerKind::Fluid { .. } | FillerKind::Paste { .. } => None,
@@ -429,6 +429,15 @@ pub enum FillerKind {
     Fluid {
         /// Conductivity, W/(m K).
         conductivity: f64,
+    },
+    /// A soft foil that flows into both faces: R″ = t/k and two boundaries that fall with pressure.
+    Foil {
+        /// Conductivity, W/(m K).
+        conductivity: f64,
+        /// Thickness, m.
+        thickness: f64,
+        /// Hardness of the foil, Pa.
+        hardness: f64,
     },
     /// A layer of known thickness: R″ = t/k + boundary.
     Layer {

@@ -76,6 +76,7 @@ fn case(case: &CaseResult) -> Map<String, Value> {
     for (key, value) in [
         ("case", json!(case.name)),
         ("sink_temperature", json!(case.sink_temperature)),
+        ("sink_radiates", json!(case.sink_radiates)),
         ("bolts", case.bolts.iter().map(bolt).collect()),
         ("pressure", pressure::pressure(case)),
         (
@@ -341,6 +342,12 @@ pub fn torque(sweep: &TorqueSweep) -> Value {
             "torque": minimum.torque,
             "source_to_sink": minimum.source_to_sink,
             "added_by_joint": minimum.added_by_joint,
+        })),
+        "at_stated": { "source_to_sink": sweep.at_stated },
+        "at_limit": sweep.at_limit.map(|limit| json!({
+            "torque": limit.torque,
+            "source_to_sink": limit.source_to_sink,
+            "added_by_joint": limit.added_by_joint,
         })),
         "required": sweep.required.map(|(resistance, bound)| {
             json!({ "resistance": resistance, "bound": bound_key(bound) })

@@ -2,7 +2,8 @@
 
 use crate::{
     estimate::{
-        self, Band, CaseResult, Chain, Failure, LARGE_ERROR, Options, TorquePoint, TorqueSweep,
+        self, Band, CaseResult, Chain, Failure, LARGE_ERROR, Minimum, Options, TorquePoint,
+        TorqueSweep,
     },
     joint::{Joint, Limit, Plane, RequirementKind, Tightening},
 };
@@ -110,10 +111,28 @@ pub fn sweep_along(chain: &Chain, options: &SweepOptions) -> Result<TorqueSweep,
             trusted,
         },
     )?;
-    let best = match minimum {
+    let at = |torque: f64| -> Result<Minimum, Failure> {
+        let path = chain
+            .with_torque(options.group, torque)?
+            .state(case, &estimate::Realisation::default())?
+            .path;
+        Ok(Minimum {
+            torque,
+            source_to_sink: path.source_to_sink,
+            added_by_joint: path.added_by_joint,
+        })
+    };
+    let row = match minimum {
         Some(minimum) => Some(minimum.torque),
         None => best_of(&points, required),
     };
+    let at_limit = match (minimum, row, largest) {
+        (None, Some(row), Some((largest, _))) if ends_the_window(&points, (row, largest)) => {
+            Some(at(largest)?).filter(|limit| better(limit, (&points, row), required))
+        }
+        _ => None,
+    };
+    let best = at_limit.map(|limit| limit.torque).or(row);
     let mut sweep = TorqueSweep {
         title: joint.title.clone(),
         group: estimate::group_label(group),
@@ -121,6 +140,8 @@ pub fn sweep_along(chain: &Chain, options: &SweepOptions) -> Result<TorqueSweep,
         largest,
         best,
         minimum,
+        at_stated: at(stated)?.source_to_sink,
+        at_limit,
         points,
         required,
         window,
@@ -132,6 +153,7 @@ pub fn sweep_along(chain: &Chain, options: &SweepOptions) -> Result<TorqueSweep,
     // In gas the gap grows with the force, which this field does not know: no torque is the best.
     if sweep.gap_unknown() {
         sweep.best = None;
+        sweep.at_limit = None;
     }
     Ok(sweep)
 }
@@ -146,6 +168,28 @@ fn best_of(points: &[TorquePoint], required: Option<(f64, Limit)>) -> Option<f64
     let allowed = points.iter().filter(|point| point.passes);
     let best = allowed.min_by(|one, other| key(one).total_cmp(&key(other)));
     best.map(|point| point.torque)
+}
+
+/// Whether a row is the last that strength allows, with the largest torque between it and the next.
+fn ends_the_window(points: &[TorquePoint], (row, largest): (f64, f64)) -> bool {
+    let next = points.iter().find(|point| point.torque > row);
+    next.is_some_and(|next| !next.passes && row < largest && largest < next.torque)
+}
+
+/// Whether the joint stands better at the limit of strength than at a row.
+fn better(
+    limit: &Minimum,
+    (points, row): (&[TorquePoint], f64),
+    required: Option<(f64, Limit)>,
+) -> bool {
+    let there = points.iter().find(|point| point.torque >= row);
+    there.is_some_and(|there| {
+        let gain = there.source_to_sink.nominal - limit.source_to_sink;
+        match required {
+            Some((_, Limit::Least)) => gain < 0.0,
+            _ => gain > 0.0,
+        }
+    })
 }
 
 /// The case in which the joint stands worst: of most resistance, or of least where the requirement

@@ -314,6 +314,26 @@ pub(super) const ENTRIES: &[Entry] = &[
         ],
     ),
     Law {
+        equation: "R = t/k + 1/h;   1/h = Σ 1/h_i over both faces;   h_i = 1.25 k_i (m_i/σ_i)(P/H)^0.95, H of the \
+                   foil, P/H at most 1",
+        range: "foil much softer than both faces and thicker than their roughness; P up to H, above the \
+                boundaries are held",
+        source: "plastic law of Yovanovich 1982 with the hardness of the foil, Yovanovich 1972, both from memory; \
+                 indium on aluminium within a factor of two of Incropera's table 3.2 (memory)",
+    }
+    .entry(
+        "law/foil",
+        "Soft foil that yields",
+        [
+            "`model = \"foil\"`: the asperities of both faces sink into a foil of indium or graphite, whose hardness \
+             then decides instead of theirs. Each boundary falls nearly in proportion to the pressure until the foil \
+             flows; beside the contact the foil lies loose, and the medium alone crosses. A table of the catalogue \
+             knows neither the roughness nor pressures beyond its last point.",
+            "Choose a thin foil that is thicker than both roughnesses together; harder foils (graphite, lead, tin) \
+             need more pressure.",
+        ],
+    ),
+    Law {
         equation: "BLT = 1.31·10⁻⁴ m (τ_y/P)^0.166,   R″ = BLT/k + (σ₁ + σ₂)/(2k)",
         range: "0.1 to 1 MPa; not thinner than the largest particles, not thicker than applied",
         source: "Prasher 2001 and 2002, constants from memory",

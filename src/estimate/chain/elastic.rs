@@ -221,9 +221,9 @@ impl ElasticModel {
         self.closed(chain, case).map(|(_, solved)| solved)
     }
 
-    /// How the faces of the first case meet at a point.
-    pub(super) fn met_at(&self, chain: &Chain, point: [f64; 2]) -> Option<Meeting> {
-        self.closed(chain, 0).ok()?.1.met_at(point)
+    /// How the faces of an interface meet at a point in the first case.
+    pub(super) fn met_at(&self, chain: &Chain, at: ([f64; 2], usize)) -> Option<Meeting> {
+        self.closed(chain, 0).ok()?.1.met_at(at)
     }
 
     /// Radius of a bolt's contact, m; not a number where no bolt clamps.
@@ -238,10 +238,10 @@ impl ElasticModel {
             .map_or(f64::NAN, |(_, solved)| solved.footprint())
     }
 
-    /// The rings around a bolt in the first case at nominal.
-    pub(super) fn rings(&self, chain: &Chain, bolt: usize) -> Vec<RingRow> {
+    /// The rings around a bolt in an interface, in the first case at nominal.
+    pub(super) fn rings(&self, chain: &Chain, (bolt, interface): (usize, usize)) -> Vec<RingRow> {
         self.closed(chain, 0)
-            .map_or_else(|_| Vec::new(), |(_, solved)| solved.rings(bolt))
+            .map_or_else(|_| Vec::new(), |(_, solved)| solved.rings(bolt, interface))
     }
 
     /// The path of a case at one realisation.

@@ -71,6 +71,14 @@ impl Joint {
             FillerKind::Fluid { conductivity } => {
                 move_to(conductivity, What::FillerConductivity(interface));
             }
+            FillerKind::Foil {
+                conductivity,
+                thickness,
+                ..
+            } => {
+                move_to(conductivity, What::FillerConductivity(interface));
+                move_to(thickness, What::FillerThickness(interface));
+            }
             FillerKind::Layer {
                 conductivity,
                 thickness,
@@ -87,6 +95,10 @@ impl Joint {
                 ..
             } => {
                 move_to(conductivity, What::FillerConductivity(interface));
+                // A stated bond line is both at once.
+                if thinnest == applied {
+                    move_to(thinnest, What::FillerThickness(interface));
+                }
                 move_to(applied, What::FillerThickness(interface));
                 move_to(thinnest, What::FillerThinnest(interface));
             }

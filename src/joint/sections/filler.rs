@@ -46,8 +46,8 @@ pub static FILLER: Section = Section {
         .default("the two plates"),
         field(
             "model",
-            Kind::Choice(&["fluid", "layer", "paste", "table"]),
-            "how it conducts: liquid in the gaps, layer, paste that thins, measured table",
+            Kind::Choice(&["fluid", "foil", "layer", "paste", "table"]),
+            "how it conducts: liquid in the gaps, soft foil that yields, layer, paste that thins, measured table",
             "\"layer\"",
         ),
         field(
@@ -64,7 +64,7 @@ pub static FILLER: Section = Section {
         ),
         length(
             "bond_line",
-            "stated bond line of a paste, which is then a layer",
+            "stated bond line of a paste; with `model = \"layer\"` it is solid and fills no opening",
             "\"50 µm\"",
         ),
         field(
@@ -82,6 +82,13 @@ pub static FILLER: Section = Section {
             "\"2 MPa\"",
         )
         .within(1e3, 1e12),
+        field(
+            "hardness",
+            Kind::Quantity(Quantity::Pressure),
+            "hardness of a foil that yields under the asperities of both faces",
+            "\"9 MPa\"",
+        )
+        .within(1e4, 1e10),
         field(
             "table",
             Kind::Pairs([Quantity::Pressure, Quantity::AreaResistance]),

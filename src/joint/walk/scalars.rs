@@ -56,16 +56,7 @@ impl Walk<'_> {
                 fault(
                     "name/unknown",
                     &stated.node.span,
-                    format!(
-                        "`{}` is not {} {} this file can name",
-                        short(&text),
-                        if stated.field.key.starts_with(['a', 'e', 'i', 'o', 'u']) {
-                            "an"
-                        } else {
-                            "a"
-                        },
-                        stated.field.key
-                    ),
+                    format!("`{}` is no choice of `{}`", short(&text), stated.field.key),
                 )
                 .expecting(format!("expected {}", stated.field.kind.expects()))
                 .nearest(&text, words.iter().copied()),

@@ -165,6 +165,13 @@ pub fn verdict(estimate: &Estimate, case: &CaseResult) -> String {
         if let Some(drop) = rise.coolant_drop {
             let _ = write!(text, "; sink surface to coolant {} K", four(drop));
         }
+        if case.sink_radiates {
+            let _ = write!(
+                text,
+                "; the radiating sink surface settles at {:.1} °C",
+                case.sink_temperature - ICE_POINT
+            );
+        }
         text = wrapped(&text, WIDTH, 2);
         text.push('\n');
     }

@@ -3,6 +3,7 @@
 mod bank;
 mod edges;
 mod heat;
+mod narrow;
 mod problem;
 mod readings;
 mod sandwich;
@@ -53,13 +54,15 @@ struct OnColumns {
     field: Arc<Field>,
     heat: Heat,
     path: Path,
+    /// What narrow zones leave out of source to sink, K/W.
+    left_out: f64,
     order: Order,
     /// What touches and what is parted of every interface have in the resistance.
     shares: Vec<[f64; 2]>,
-    /// Local conductances of the first interface.
-    first: Vec<Vec<f64>>,
-    /// Pressures for drawings.
-    shown: OnceLock<Vec<f64>>,
+    /// Local conductances of every interface, from warm to cold.
+    faces: Conductances,
+    /// Pressures for drawings, of every interface of the field.
+    shown: Vec<OnceLock<Vec<f64>>>,
 }
 
 impl Columns {
@@ -99,19 +102,20 @@ impl Solver for Columns {
     ) -> Result<Arc<dyn Solved>, Failure> {
         let field = self.field(joint, (level, variant), conditions)?;
         let plates = self.bank.plates(joint, level, &field)?;
-        let mut faces: Conductances = conductances(&field, self.bank.order, (conditions, factors));
+        let faces: Conductances = conductances(&field, self.bank.order, (conditions, factors));
         let (heat, path) = plates
             .solve(&faces, &factors.conductivity(conditions), conditions)
             .map_err(Failure::Heat)?;
         let order = self.bank.order;
         Ok(Arc::new(OnColumns {
+            left_out: narrow::left_out(joint, conditions),
             shares: shares((&field, order), &heat, &faces),
             order,
             field,
             heat,
             path,
-            first: faces.swap_remove(0),
-            shown: OnceLock::new(),
+            shown: faces.iter().map(|_| OnceLock::new()).collect(),
+            faces,
         }))
     }
 

@@ -117,11 +117,11 @@ pub(in crate::estimate::chain) trait Solved:
     /// Radius of a bolt's contact, m.
     fn contact_radius(&self, bolt: usize) -> f64;
 
-    /// How the faces of the first interface meet at a point; none off the faying faces.
-    fn met_at(&self, point: [f64; 2]) -> Option<Meeting>;
+    /// How the faces of an interface meet at a point; none off the faying faces.
+    fn met_at(&self, at: ([f64; 2], usize)) -> Option<Meeting>;
 
-    /// The rings around a bolt, from its hole outward.
-    fn rings(&self, bolt: usize) -> Vec<RingRow>;
+    /// The rings around a bolt in an interface, from its hole outward.
+    fn rings(&self, bolt: usize, interface: usize) -> Vec<RingRow>;
 
     /// The field as the reader gets it, with what becomes of flatness and the cone beside it.
     fn pressure(&self, flatness: Flatness, cone: Option<ConeBeside>) -> PressureResult;
@@ -133,8 +133,8 @@ pub(in crate::estimate::chain) trait Solved:
     /// Temperatures at a glance.
     fn temperatures(&self) -> Temperatures;
 
-    /// Both faying faces at points in joint coordinates; none off the faces.
-    fn face_points(&self, points: &[[f64; 2]]) -> Vec<Option<FacePoint>>;
+    /// Both faying faces of an interface at points in joint coordinates; none off the faces.
+    fn face_points(&self, points: &[[f64; 2]], interface: usize) -> Vec<Option<FacePoint>>;
 
     /// Temperatures on a line through the stack, per watt above the mean sink surface, warm side
     /// first; none where the line misses it.
@@ -142,4 +142,9 @@ pub(in crate::estimate::chain) trait Solved:
 
     /// Error of the heat that a coarser level does not tell, relative to source to sink.
     fn heat_error(&self) -> f64;
+
+    /// What heated and cooled zones too narrow for the grid may leave out of source to sink, K/W.
+    fn left_out(&self) -> f64 {
+        0.0
+    }
 }

@@ -14,7 +14,9 @@ use crate::{
     pressure::elastic::{Field, Mesh},
     resistance::{
         self, Path,
-        columns::{Body, Conduction, Conductivity, Heat, Meeting, Perfect, Slab, Stack, Terminals},
+        columns::{
+            Body, Conduction, Conductivity, Heat, Meeting, Perfect, Slab, Stack, Terminals, nodal,
+        },
     },
 };
 
@@ -157,15 +159,18 @@ pub(super) fn conductances(
         .enumerate()
         .map(|(index, face)| {
             let laws = &conditions.faces[order.plate(index, field.faces.len())];
-            let highest = face.pressure.iter().copied().fold(0.0, f64::max);
+            let contact = &field.mesh.faces[index].contact;
+            let pressures = nodal(&field.mesh.plan, contact, &face.pressure);
+            let highest = pressures.iter().copied().fold(0.0, f64::max);
             let touching = laws.over_many_points(highest);
             let parted = |gap: f64| factors.parted * laws.local.parted(gap);
-            let columns = face.pressure.iter().zip(&face.gap).zip(&face.weight);
+            let columns = pressures.iter().zip(&face.gap).zip(&face.weight);
             let own = columns
-                .map(|((pressure, gap), weight)| {
+                .enumerate()
+                .map(|(column, ((pressure, gap), weight))| {
                     if *weight <= 0.0 {
                         0.0
-                    } else if *pressure > 0.0 {
+                    } else if face.pressure[column] > 0.0 {
                         factors.touching * touching(*pressure)
                     } else {
                         parted(*gap)
