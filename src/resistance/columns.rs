@@ -52,6 +52,7 @@ mod terminals;
 mod zone;
 
 pub use conduction::{Conduction, Perfect, solve_both};
+pub use equations::Family;
 pub use heat::{Health, Heat, Hottest};
 pub use parts::Part;
 pub use section::{Across, Section};

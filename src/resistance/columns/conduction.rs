@@ -6,7 +6,7 @@ use crate::resistance::{
     Failure,
     columns::{
         Conductivity, Health, Heat, Stack, Terminals,
-        equations::{Arrangement, Equations, TOLERANCE},
+        equations::{Arrangement, Equations, Family, Reduced, TOLERANCE},
         readings::{Reader, blocked},
         terminals::Ends,
     },
@@ -19,6 +19,7 @@ pub struct Conduction {
     conductivity: Vec<Conductivity>,
     ends: Ends,
     equations: Equations,
+    reduced: Option<Reduced>,
     /// Residual asked for, over the load; readings are off by far less.
     pub tolerance: f64,
 }
@@ -65,6 +66,21 @@ impl Perfect {
         })
     }
 
+    /// Stands where nobody asks for perfect contact: not a number.
+    pub fn unknown() -> Self {
+        Self {
+            conductivity: Vec::new(),
+            strengths: Vec::new(),
+            source_to_sink: f64::NAN,
+            health: Health {
+                iterations: 0,
+                residual: f64::NAN,
+                balance: f64::NAN,
+                unknowns: 0,
+            },
+        }
+    }
+
     /// Whether this is the perfect contact of such bodies and bolts in the same stack.
     pub fn serves(&self, terminals: &Terminals, conductivity: &[Conductivity]) -> bool {
         let near = |a: f64, b: f64| (a - b).abs() <= 1e-12 * a.abs();
@@ -106,6 +122,7 @@ impl Conduction {
             conductivity: conductivity.to_vec(),
             ends,
             equations,
+            reduced: None,
             tolerance: TOLERANCE,
         })
     }
@@ -136,7 +153,45 @@ impl Conduction {
         self.equations.join(&conductances)?;
         self.equations.tolerance = self.tolerance;
         let health = self.equations.solve()?;
-        let heat = self.reader(&conductances).heat(&self.equations, health);
+        self.read(&conductances, health)
+    }
+
+    /// Heat under local conductances as the best sum of the temperatures of a family: the one that
+    /// leaves least energy of the error.
+    ///
+    /// ```text
+    /// T = Σ a_m T_m,   Σ_n (T_mᵀ A T_n) a_n = T_mᵀ f
+    /// ```
+    ///
+    /// `A` and `f` are those of [`Conduction::solve`]. The resistance is off by the square of what the
+    /// temperatures are off by; how much that is the caller finds at states that are solved. The first
+    /// family that is given serves for good.
+    /// Checked: `states_between_solved_ones_are_sums_of_these`.
+    pub fn combined(
+        &mut self,
+        family: &Family,
+        conductance: &[Vec<Vec<f64>>],
+    ) -> Result<Heat, Failure> {
+        let conductances = self.conductances(conductance)?;
+        if blocked(&self.terminals, &self.ends, &conductances) {
+            return Ok(self.reader(&conductances).blocked());
+        }
+        let reduced = match self.reduced.take() {
+            Some(known) => known,
+            None => self.equations.reduced(family),
+        };
+        let health = self.equations.combine(family, &reduced, &conductances);
+        self.reduced = Some(reduced);
+        self.read(&conductances, health?)
+    }
+
+    /// Temperatures of the last solution, for a [`Family`].
+    pub fn state(&self) -> &[f64] {
+        &self.equations.rise
+    }
+
+    fn read(&self, conductances: &[Vec<Vec<f64>>], health: Health) -> Result<Heat, Failure> {
+        let heat = self.reader(conductances).heat(&self.equations, health);
         for (reading, value) in [
             ("source to sink", heat.source_to_sink),
             ("hottest", heat.hottest.rise),

@@ -1,0 +1,146 @@
+//! Temperatures as sums of known ones: the same equations in as many unknowns.
+
+use nalgebra::{DMatrix, DVector};
+
+use crate::resistance::{
+    Failure,
+    columns::{
+        Health,
+        equations::{Equations, stopped},
+    },
+};
+
+/// Share of its length that temperatures must add to those before them; less is what their own
+/// solution leaves, and would be blown up.
+const NEWS: f64 = 1e-5;
+
+/// Temperatures of solved states of one stack: orthonormal, they span these.
+#[derive(Clone, Debug, Default)]
+pub struct Family {
+    members: Vec<Vec<f64>>,
+}
+
+impl Family {
+    /// The family of some states, from [`super::super::Conduction::state`].
+    pub fn of<'a>(states: impl IntoIterator<Item = &'a [f64]>) -> Self {
+        let mut members: Vec<Vec<f64>> = Vec::new();
+        for state in states {
+            let mut new = state.to_vec();
+            // Twice is enough, whatever is left.
+            for _ in 0..2 {
+                for member in &members {
+                    let along = dot(member, &new);
+                    add(&mut new, -along, member);
+                }
+            }
+            let left = dot(&new, &new).sqrt();
+            if left > NEWS * dot(state, state).sqrt() {
+                new.iter_mut().for_each(|value| *value /= left);
+                members.push(new);
+            }
+        }
+        Self { members }
+    }
+}
+
+/// The equations of one set of conductivities in the members of a family.
+pub(in crate::resistance::columns) struct Reduced {
+    /// Bodies, sinks and bolts.
+    apart: DMatrix<f64>,
+    load: DVector<f64>,
+    /// For every part of every interface, column by column, what every member drops there.
+    drops: Vec<Vec<Vec<f64>>>,
+}
+
+impl Equations {
+    /// The equations in the members of a family; the bodies are parted for it.
+    pub(in crate::resistance::columns) fn reduced(&mut self, family: &Family) -> Reduced {
+        let members = &family.members;
+        let columns = self.operator.plan().columns();
+        for tie in self.ties.iter().flatten() {
+            self.operator.set_tie(*tie, &vec![0.0; columns]);
+        }
+        let mut apart = DMatrix::zeros(members.len(), members.len());
+        let mut image = self.operator.zeros();
+        for (row, member) in members.iter().enumerate() {
+            self.operator.product(member, &mut image);
+            for (place, other) in members.iter().enumerate().take(row + 1) {
+                let energy = dot(other, &image);
+                apart[(row, place)] = energy;
+                apart[(place, row)] = energy;
+            }
+        }
+        let load = members.iter().map(|member| dot(member, &self.load));
+        let drops = |tie: &usize| {
+            let [plus, minus] = self.operator.ends(*tie);
+            let mut drops = Vec::with_capacity(columns * members.len());
+            for column in 0..columns {
+                let [plus, minus] = [plus, minus].map(|at| self.operator.place(column, at));
+                drops.extend(members.iter().map(|member| member[plus] - member[minus]));
+            }
+            drops
+        };
+        let faces = self.ties.iter();
+        Reduced {
+            apart,
+            load: DVector::from_iterator(members.len(), load),
+            drops: faces.map(|ties| ties.iter().map(drops).collect()).collect(),
+        }
+    }
+
+    /// Takes the best sum of the members under some conductances, W/K, for the temperatures.
+    pub(in crate::resistance::columns) fn combine(
+        &mut self,
+        family: &Family,
+        reduced: &Reduced,
+        conductances: &[Vec<Vec<f64>>],
+    ) -> Result<Health, Failure> {
+        let count = family.members.len();
+        let mut matrix = reduced.apart.clone();
+        let faces = conductances.iter().flatten();
+        for (conductances, drops) in faces.zip(reduced.drops.iter().flatten()) {
+            for (conductance, drops) in conductances.iter().zip(drops.chunks_exact(count)) {
+                if *conductance > 0.0 {
+                    for (row, one) in drops.iter().enumerate() {
+                        let scaled = conductance * one;
+                        for (place, other) in drops.iter().enumerate().take(row + 1) {
+                            matrix[(row, place)] += scaled * other;
+                        }
+                    }
+                }
+            }
+        }
+        // The factor reads the lower triangle alone.
+        let factor = matrix.cholesky().ok_or_else(|| stopped(0, f64::NAN))?;
+        let weights = factor.solve(&reduced.load);
+        self.rise.fill(0.0);
+        for (weight, member) in weights.iter().zip(&family.members) {
+            add(&mut self.rise, *weight, member);
+        }
+        let heat = self.heat();
+        Ok(Health {
+            iterations: 0,
+            residual: f64::NAN,
+            balance: ((self.drained() - heat) / heat).abs(),
+            unknowns: count,
+        })
+    }
+}
+
+fn dot(one: &[f64], other: &[f64]) -> f64 {
+    let (blocks, others) = (one.as_chunks::<4>(), other.as_chunks::<4>());
+    let mut sums = [0.0; 4];
+    for (x, y) in blocks.0.iter().zip(others.0) {
+        for (lane, sum) in sums.iter_mut().enumerate() {
+            *sum += x[lane] * y[lane];
+        }
+    }
+    let rest = blocks.1.iter().zip(others.1);
+    sums.iter().sum::<f64>() + rest.map(|(x, y)| x * y).sum::<f64>()
+}
+
+fn add(to: &mut [f64], factor: f64, other: &[f64]) {
+    for (to, other) in to.iter_mut().zip(other) {
+        *to += factor * other;
+    }
+}
