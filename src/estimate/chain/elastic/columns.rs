@@ -132,9 +132,17 @@ impl Solver for Columns {
         let order = self.bank.order;
         let mut plates = None;
         let mut loads = Vec::with_capacity(states.len());
+        let mut last: Option<(&State, Arc<Field>)> = None;
         for state in states {
             let under = (&state.conditions, &state.factors);
-            let field = self.field(joint, (level, state.variant), under.0)?;
+            let same = |(last, _): &&(&State, Arc<Field>)| {
+                last.variant == state.variant && last.conditions.forces == state.conditions.forces
+            };
+            let field = match last.as_ref().filter(same) {
+                Some((_, field)) => field.clone(),
+                None => self.field(joint, (level, state.variant), under.0)?,
+            };
+            last = Some((state, field.clone()));
             loads.push(Load {
                 faces: conductances(&field, order, under),
                 in_plane: state.factors.conductivity(&state.conditions),

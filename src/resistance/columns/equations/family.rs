@@ -144,3 +144,93 @@ fn add(to: &mut [f64], factor: f64, other: &[f64]) {
         *to += factor * other;
     }
 }
+
+#[cfg(test)]
+mod tests {
+    use std::sync::Arc;
+
+    use super::*;
+    use crate::{
+        numerics::columns::Plan,
+        resistance::columns::{
+            Body, Conduction, Conductivity, Sink, Slab, Source, Stack, Terminals, Zone,
+        },
+    };
+
+    /// Two plates of 60 × 40 mm, heated in a corner, cooled by a film.
+    fn conduction(conductivity: f64) -> (Arc<Stack>, Conduction) {
+        let lines = |count: usize| (0..=count).map(|at| at as f64 * 0.005).collect();
+        let plan = Plan::new(lines(12), lines(8));
+        let plate = |thickness: f64| Body {
+            layers: vec![Slab {
+                shares: vec![1.0; 96],
+                heights: vec![thickness],
+                degree: 2,
+            }],
+        };
+        let stack = Arc::new(Stack::new(plan, vec![plate(0.004), plate(0.006)]).unwrap());
+        let heated = Zone::Rectangle {
+            low: [0.005, 0.005],
+            high: [0.02, 0.02],
+        };
+        let terminals = Terminals {
+            source: Source::Flux(vec![(heated, 1.0)]),
+            sinks: vec![Sink::Film {
+                zone: Zone::Face,
+                coefficient: 2000.0,
+            }],
+            bolts: Vec::new(),
+        };
+        let plates = [conductivity, 167.0].map(Conductivity::isotropic);
+        let conduction = Conduction::new(&stack, &terminals, &plates).unwrap();
+        (stack, conduction)
+    }
+
+    /// Local conductance that falls from one side to the other, times a factor.
+    fn faces(stack: &Stack, factor: f64) -> Vec<Vec<Vec<f64>>> {
+        let mut faces = stack.uniform(1.0);
+        for (column, value) in faces[0][0].iter_mut().enumerate() {
+            *value = factor * 2000.0 * (1.0 - 12.0 * stack.plan().place(column)[0]);
+        }
+        faces
+    }
+
+    #[test]
+    fn states_between_solved_ones_are_sums_of_these() {
+        let mut states = Vec::new();
+        for (conductivity, factor) in [(100.0, 1.0), (100.0, 2.0), (100.0, 0.5), (120.0, 1.0)] {
+            let (stack, mut conduction) = conduction(conductivity);
+            conduction.solve(&faces(&stack, factor)).unwrap();
+            states.push(conduction.state().to_vec());
+        }
+        let family = Family::of(states.iter().map(Vec::as_slice));
+        assert_eq!(family.members.len(), 4);
+        // A member is met within what its solution leaves; others by the square of what their
+        // temperatures miss, some 1e-3 here.
+        for (conductivity, factor, tolerance) in
+            [(100.0, 2.0, 1e-8), (100.0, 1.4, 1e-5), (110.0, 0.8, 1e-5)]
+        {
+            let (stack, mut solved) = conduction(conductivity);
+            let whole = solved.solve(&faces(&stack, factor)).unwrap();
+            let (_, mut summed) = conduction(conductivity);
+            let sum = summed.combined(&family, &faces(&stack, factor)).unwrap();
+            let off = sum.source_to_sink / whole.source_to_sink - 1.0;
+            assert!(off.abs() < tolerance, "{conductivity} {factor}: {off:e}");
+            // Fewer unknowns are stiffer: less rises above the coolant under the same heat.
+            let rise =
+                |heat: &crate::resistance::columns::Heat| heat.source_to_sink + heat.sink_mean;
+            assert!(rise(&sum) <= rise(&whole) * (1.0 + 1e-9));
+        }
+    }
+
+    #[test]
+    fn what_adds_nothing_is_no_member() {
+        let one = [1.0, 2.0, 3.0, 4.0, 5.0];
+        let twice = one.map(|value| 2.0 * value);
+        let other = [1.0, 0.0, 0.0, 0.0, 0.0];
+        let family = Family::of([&one[..], &twice[..], &other[..]]);
+        assert_eq!(family.members.len(), 2);
+        // Rounding alone.
+        assert!(dot(&family.members[0], &family.members[1]).abs() < 1e-15);
+    }
+}

@@ -95,7 +95,9 @@ impl Plates {
         }
         let with_perfect = |set: Vec<(usize, &'a Load)>| {
             let conductivity = self.conductivity(&set[0].1.in_plane);
-            let asked = set.iter().any(|(_, load)| load.depth != Depth::SourceToSink);
+            let asked = set
+                .iter()
+                .any(|(_, load)| load.depth != Depth::SourceToSink);
             let perfect = if asked {
                 self.perfect(conditions, (terminals, &conductivity))?
             } else {
