@@ -14,7 +14,10 @@ use crate::resistance::{
 /// solution leaves, and would be blown up.
 const NEWS: f64 = 1e-5;
 
-/// Temperatures of solved states of one stack: orthonormal, they span these.
+/// Temperatures of solved states of one stack and one uniform temperature: orthonormal, they span
+/// these.
+///
+/// With the uniform one what enters leaves again, to rounding.
 #[derive(Clone, Debug, Default)]
 pub struct Family {
     members: Vec<Vec<f64>>,
@@ -23,23 +26,32 @@ pub struct Family {
 impl Family {
     /// The family of some states, from [`super::super::Conduction::state`].
     pub fn of<'a>(states: impl IntoIterator<Item = &'a [f64]>) -> Self {
-        let mut members: Vec<Vec<f64>> = Vec::new();
+        let mut family = Self::default();
         for state in states {
-            let mut new = state.to_vec();
-            // Twice is enough, whatever is left.
-            for _ in 0..2 {
-                for member in &members {
-                    let along = dot(member, &new);
-                    add(&mut new, -along, member);
-                }
-            }
-            let left = dot(&new, &new).sqrt();
-            if left > NEWS * dot(state, state).sqrt() {
-                new.iter_mut().for_each(|value| *value /= left);
-                members.push(new);
+            family.take(state);
+        }
+        // Last: it pulls at stiffly held faces, and would bring that into the others.
+        if let Some(length) = family.members.first().map(Vec::len) {
+            family.take(&vec![1.0; length]);
+        }
+        family
+    }
+
+    /// Takes what is new in a state for a member.
+    fn take(&mut self, state: &[f64]) {
+        let mut new = state.to_vec();
+        // Twice is enough, whatever is left.
+        for _ in 0..2 {
+            for member in &self.members {
+                let along = dot(member, &new);
+                add(&mut new, -along, member);
             }
         }
-        Self { members }
+        let left = dot(&new, &new).sqrt();
+        if left > NEWS * dot(state, state).sqrt() {
+            new.iter_mut().for_each(|value| *value /= left);
+            self.members.push(new);
+        }
     }
 }
 
@@ -204,7 +216,7 @@ mod tests {
             states.push(conduction.state().to_vec());
         }
         let family = Family::of(states.iter().map(Vec::as_slice));
-        assert_eq!(family.members.len(), 4);
+        assert_eq!(family.members.len(), 5);
         // A member is met within what its solution leaves; others by the square of what their
         // temperatures miss, some 1e-3 here.
         for (conductivity, factor, tolerance) in
@@ -220,6 +232,8 @@ mod tests {
             let rise =
                 |heat: &crate::resistance::columns::Heat| heat.source_to_sink + heat.sink_mean;
             assert!(rise(&sum) <= rise(&whole) * (1.0 + 1e-9));
+            // Rounding alone.
+            assert!(sum.health.balance < 1e-12, "{:e}", sum.health.balance);
         }
     }
 
@@ -229,7 +243,8 @@ mod tests {
         let twice = one.map(|value| 2.0 * value);
         let other = [1.0, 0.0, 0.0, 0.0, 0.0];
         let family = Family::of([&one[..], &twice[..], &other[..]]);
-        assert_eq!(family.members.len(), 2);
+        // The uniform temperature is new as well.
+        assert_eq!(family.members.len(), 3);
         // Rounding alone.
         assert!(dot(&family.members[0], &family.members[1]).abs() < 1e-15);
     }
