@@ -55,7 +55,7 @@ impl Perfect {
         (terminals, conductivity): (&Terminals, &[Conductivity]),
     ) -> Result<Self, Failure> {
         let mut equations =
-            Equations::new(stack, ends, (terminals, conductivity), Arrangement::Merged)?;
+            Equations::new(stack, ends, (terminals, conductivity), Arrangement::Merged);
         let health = equations.solve()?;
         let rise = equations.source_mean() - equations.sink_mean();
         Ok(Self {
@@ -106,17 +106,16 @@ impl Conduction {
     ) -> Result<Self, Failure> {
         check(stack, terminals, conductivity)?;
         let ends = Ends::new(stack, terminals)?;
-        Self::of(stack, ends, (terminals, conductivity))
+        Ok(Self::of(stack, ends, (terminals, conductivity)))
     }
 
     fn of(
         stack: &Arc<Stack>,
         ends: Ends,
         (terminals, conductivity): (&Terminals, &[Conductivity]),
-    ) -> Result<Self, Failure> {
-        let equations =
-            Equations::new(stack, &ends, (terminals, conductivity), Arrangement::Apart)?;
-        Ok(Self {
+    ) -> Self {
+        let equations = Equations::new(stack, &ends, (terminals, conductivity), Arrangement::Apart);
+        Self {
             stack: stack.clone(),
             terminals: terminals.clone(),
             conductivity: conductivity.to_vec(),
@@ -124,7 +123,7 @@ impl Conduction {
             equations,
             reduced: None,
             tolerance: TOLERANCE,
-        })
+        }
     }
 
     /// Heat under local conductances, W/(m² K): one for every column of every part of an interface.
@@ -164,8 +163,7 @@ impl Conduction {
     /// ```
     ///
     /// `A` and `f` are those of [`Conduction::solve`]. The resistance is off by the square of what the
-    /// temperatures are off by; how much that is the caller finds at states that are solved. The first
-    /// family that is given serves for good.
+    /// temperatures are off by; how much that is the caller finds at states that are solved.
     /// Checked: `states_between_solved_ones_are_sums_of_these`.
     pub fn combined(
         &mut self,
@@ -176,11 +174,14 @@ impl Conduction {
         if blocked(&self.terminals, &self.ends, &conductances) {
             return Ok(self.reader(&conductances).blocked());
         }
-        let reduced = match self.reduced.take() {
-            Some(known) => known,
-            None => self.equations.reduced(family),
-        };
-        let health = self.equations.combine(family, &reduced, &conductances);
+        if !family.fits(self.equations.rise.len()) {
+            return Err(Failure::Misfit {
+                what: "a family needs states of this stack",
+            });
+        }
+        let known = self.reduced.take().filter(|known| known.serves(family));
+        let reduced = known.unwrap_or_else(|| self.equations.reduced(family));
+        let health = self.equations.combine(&reduced, &conductances);
         self.reduced = Some(reduced);
         self.read(&conductances, health?)
     }
@@ -271,7 +272,7 @@ pub fn solve_both(
     let given = (terminals, conductivity);
     let (real, perfect) = rayon::join(
         || {
-            let mut conduction = Conduction::of(stack, ends.clone(), given)?;
+            let mut conduction = Conduction::of(stack, ends.clone(), given);
             let heat = conduction.solve(conductance)?;
             Ok::<_, Failure>((conduction, heat))
         },

@@ -81,7 +81,7 @@ impl Equations {
         ends: &Ends,
         (terminals, conductivity): (&Terminals, &[Conductivity]),
         arrangement: Arrangement,
-    ) -> Result<Self, Failure> {
+    ) -> Self {
         let (groups, places) = arranged(stack, arrangement);
         let mut operator = Operator::<Scalar>::new(&stack.plan, &groups);
         for (index, body) in stack.bodies.iter().enumerate() {
@@ -187,7 +187,7 @@ impl Equations {
                 load[*place] += share * weight * gripped.unwrap_or(1.0);
             }
         }
-        Ok(Self {
+        Self {
             rise: operator.zeros(),
             operator,
             multigrid: None,
@@ -200,7 +200,7 @@ impl Equations {
             tolerance: TOLERANCE,
             beside,
             threads,
-        })
+        }
     }
 
     /// Place of a node in the vector of temperatures.

@@ -1,5 +1,7 @@
 //! Temperatures as sums of known ones: the same equations in as many unknowns.
 
+use std::sync::Arc;
+
 use nalgebra::{DMatrix, DVector};
 
 use crate::resistance::{
@@ -20,43 +22,54 @@ const NEWS: f64 = 1e-5;
 /// With the uniform one what enters leaves again, to rounding.
 #[derive(Clone, Debug, Default)]
 pub struct Family {
-    members: Vec<Vec<f64>>,
+    members: Arc<Vec<Vec<f64>>>,
 }
 
 impl Family {
-    /// The family of some states, from [`super::super::Conduction::state`].
+    /// The family of some states, from [`crate::resistance::columns::Conduction::state`].
     pub fn of<'a>(states: impl IntoIterator<Item = &'a [f64]>) -> Self {
-        let mut family = Self::default();
+        let mut members = Vec::new();
         for state in states {
-            family.take(state);
+            take(&mut members, state);
         }
         // Last: it pulls at stiffly held faces, and would bring that into the others.
-        if let Some(length) = family.members.first().map(Vec::len) {
-            family.take(&vec![1.0; length]);
+        if let Some(length) = members.first().map(Vec::len) {
+            take(&mut members, &vec![1.0; length]);
         }
-        family
+        Self {
+            members: Arc::new(members),
+        }
     }
 
-    /// Takes what is new in a state for a member.
-    fn take(&mut self, state: &[f64]) {
-        let mut new = state.to_vec();
-        // Twice is enough, whatever is left.
-        for _ in 0..2 {
-            for member in &self.members {
-                let along = dot(member, &new);
-                add(&mut new, -along, member);
-            }
+    /// Whether it has members, all of such a length.
+    pub(in crate::resistance::columns) fn fits(&self, length: usize) -> bool {
+        let mut members = self.members.iter();
+        !self.members.is_empty() && members.all(|member| member.len() == length)
+    }
+}
+
+/// Takes what is new in a state for a member.
+fn take(members: &mut Vec<Vec<f64>>, state: &[f64]) {
+    let mut new = state.to_vec();
+    // Twice is enough, whatever is left.
+    for _ in 0..2 {
+        for member in members.iter() {
+            let along = dot(member, &new);
+            add(&mut new, -along, member);
         }
-        let left = dot(&new, &new).sqrt();
-        if left > NEWS * dot(state, state).sqrt() {
-            new.iter_mut().for_each(|value| *value /= left);
-            self.members.push(new);
+    }
+    let left = dot(&new, &new).sqrt();
+    if left > NEWS * dot(state, state).sqrt() {
+        for value in &mut new {
+            *value /= left;
         }
+        members.push(new);
     }
 }
 
 /// The equations of one set of conductivities in the members of a family.
 pub(in crate::resistance::columns) struct Reduced {
+    family: Family,
     /// Bodies, sinks and bolts.
     apart: DMatrix<f64>,
     load: DVector<f64>,
@@ -64,10 +77,17 @@ pub(in crate::resistance::columns) struct Reduced {
     drops: Vec<Vec<Vec<f64>>>,
 }
 
+impl Reduced {
+    /// Whether these are the equations in the members of a family.
+    pub(in crate::resistance::columns) fn serves(&self, family: &Family) -> bool {
+        Arc::ptr_eq(&self.family.members, &family.members)
+    }
+}
+
 impl Equations {
     /// The equations in the members of a family; the bodies are parted for it.
     pub(in crate::resistance::columns) fn reduced(&mut self, family: &Family) -> Reduced {
-        let members = &family.members;
+        let members = family.members.as_slice();
         let columns = self.operator.plan().columns();
         for tie in self.ties.iter().flatten() {
             self.operator.set_tie(*tie, &vec![0.0; columns]);
@@ -94,6 +114,7 @@ impl Equations {
         };
         let faces = self.ties.iter();
         Reduced {
+            family: family.clone(),
             apart,
             load: DVector::from_iterator(members.len(), load),
             drops: faces.map(|ties| ties.iter().map(drops).collect()).collect(),
@@ -103,11 +124,10 @@ impl Equations {
     /// Takes the best sum of the members under some conductances, W/K, for the temperatures.
     pub(in crate::resistance::columns) fn combine(
         &mut self,
-        family: &Family,
         reduced: &Reduced,
         conductances: &[Vec<Vec<f64>>],
     ) -> Result<Health, Failure> {
-        let count = family.members.len();
+        let count = reduced.family.members.len();
         let mut matrix = reduced.apart.clone();
         let faces = conductances.iter().flatten();
         for (conductances, drops) in faces.zip(reduced.drops.iter().flatten()) {
@@ -126,7 +146,7 @@ impl Equations {
         let factor = matrix.cholesky().ok_or_else(|| stopped(0, f64::NAN))?;
         let weights = factor.solve(&reduced.load);
         self.rise.fill(0.0);
-        for (weight, member) in weights.iter().zip(&family.members) {
+        for (weight, member) in weights.iter().zip(reduced.family.members.iter()) {
             add(&mut self.rise, *weight, member);
         }
         let heat = self.heat();

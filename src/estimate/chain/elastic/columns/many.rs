@@ -42,6 +42,9 @@ struct Chain<'a> {
 /// Temperatures of the solved loads, and of the same with perfect feet.
 type Families = [Family; 2];
 
+/// The same before they are families.
+type States = [Vec<Vec<f64>>; 2];
+
 /// A path with the number of its load.
 type Numbered = (usize, Path);
 
@@ -122,11 +125,11 @@ impl Plates {
         &self,
         chain: &Chain,
         terminals: &Terminals,
-    ) -> Result<(Vec<Numbered>, [Vec<Vec<f64>>; 2]), resistance::Failure> {
+    ) -> Result<(Vec<Numbered>, States), resistance::Failure> {
         let mut conduction = Conduction::new(&self.stack, terminals, &chain.conductivity)?;
         conduction.tolerance = TOLERANCE;
         let mut paths = Vec::new();
-        let mut states = [Vec::new(), Vec::new()];
+        let mut states: States = [Vec::new(), Vec::new()];
         for (number, load) in &chain.loads {
             let heat = conduction.solve(&load.faces)?;
             states[0].push(conduction.state().to_vec());
