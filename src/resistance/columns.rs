@@ -53,6 +53,7 @@ mod terminals;
 mod zone;
 
 pub use conduction::{Conduction, Perfect, solve_both};
+pub use equations::Family;
 pub use heat::{Health, Heat, Hottest};
 pub use nodal::nodal;
 pub use parts::Part;

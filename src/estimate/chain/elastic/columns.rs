@@ -3,6 +3,7 @@
 mod bank;
 mod edges;
 mod heat;
+mod many;
 mod narrow;
 mod problem;
 mod readings;
@@ -20,7 +21,7 @@ use crate::{
             conditions::Conditions,
             elastic::{
                 level::{GROUND, Level},
-                solver::{Factors, Solved, Solver},
+                solver::{Factors, Solved, Solver, State},
                 variant::Variant,
             },
         },
@@ -32,6 +33,7 @@ use crate::{
 
 use bank::{Bank, Wanted};
 use heat::{Conductances, conductances};
+use many::Load;
 use problem::Order;
 use readings::{initial, shares, widest};
 
@@ -117,6 +119,49 @@ impl Solver for Columns {
             shown: faces.iter().map(|_| OnceLock::new()).collect(),
             faces,
         }))
+    }
+
+    fn expect(
+        &self,
+        joint: &Joint,
+        task: (Level, Variant),
+        conditions: &Conditions,
+    ) -> Result<(), Failure> {
+        self.field(joint, task, conditions).map(|_| ())
+    }
+
+    /// Contacts are solved one after the other, each on all cores; then the heat of all side by side.
+    /// So no thread decides where a solution starts.
+    fn paths(&self, joint: &Joint, level: Level, states: &[State]) -> Result<Vec<Path>, Failure> {
+        let order = self.bank.order;
+        let mut plates = None;
+        let mut loads = Vec::with_capacity(states.len());
+        let mut last: Option<(&State, Arc<Field>)> = None;
+        for state in states {
+            let under = (&state.conditions, &state.factors);
+            let same = |(last, _): &&(&State, Arc<Field>)| {
+                last.variant == state.variant && last.conditions.forces == state.conditions.forces
+            };
+            let field = match last.as_ref().filter(same) {
+                Some((_, field)) => field.clone(),
+                None => self.field(joint, (level, state.variant), under.0)?,
+            };
+            last = Some((state, field.clone()));
+            loads.push(Load {
+                faces: conductances(&field, order, under),
+                in_plane: state.factors.conductivity(&state.conditions),
+                depth: state.depth,
+            });
+            if plates.is_none() {
+                plates = Some(self.bank.plates(joint, level, &field)?);
+            }
+        }
+        let (Some(plates), Some(first)) = (plates, states.first()) else {
+            return Ok(Vec::new());
+        };
+        plates
+            .paths(&loads, &first.conditions)
+            .map_err(Failure::Heat)
     }
 
     fn tabulate(

@@ -5,7 +5,7 @@ use serde_json::{Value, json};
 use crate::{
     estimate::chain::{
         conditions::Conditions,
-        elastic::solver::{Met, variable},
+        elastic::solver::{Depth, Met, variable},
     },
     numerics::surface::{Surface, design},
     resistance::Path,
@@ -214,11 +214,11 @@ impl Response {
     /// Solves the designs and the probes, and lays the surfaces through the former.
     ///
     /// `range` is the least and the largest force over the nominal, with the half widths of the
-    /// design; `solve` finds the paths of many
-    /// departures, `open` that without force.
+    /// design; `solve` finds the paths of many departures, each as deep as it says; `open` is the
+    /// one without force.
     pub(super) fn through<E>(
         (range, steps): ([f64; 2], &'static [f64]),
-        solve: impl Fn(&[Departure]) -> Result<Vec<Path>, E>,
+        solve: impl Fn(&[(Departure, Depth)]) -> Result<Vec<Path>, E>,
         open: Option<Path>,
     ) -> Result<Self, E> {
         let forces = forces(range);
@@ -241,7 +241,18 @@ impl Response {
                 .collect();
             at(force, &rest)
         }));
-        let paths = solve(&points)?;
+        let asked: Vec<(Departure, Depth)> = points
+            .iter()
+            .enumerate()
+            .map(|(place, departure)| {
+                if place < solutions {
+                    (*departure, depth(departure, ends))
+                } else {
+                    (*departure, Depth::SourceToSink)
+                }
+            })
+            .collect();
+        let paths = solve(&asked)?;
         let (designs, probes) = paths.split_at(solutions);
         let read: Vec<Readings> = designs.iter().map(readings).collect();
         let centre = solutions_at_nominal(&forces, alone);
@@ -399,9 +410,17 @@ pub(super) fn bounded(range: [f64; 2]) -> Vec<f64> {
     }
 }
 
-/// A departure of the force alone.
-pub(super) fn at_force(force: f64) -> Departure {
-    at(force, &[0.0; VARIABLES - 1])
+/// Solved are the middle of every design, all points along one variable at the nominal force and
+/// those along the contact at both ends of the force; the heat of the others is between them.
+fn depth([force, rest @ ..]: &Departure, ends: [f64; 2]) -> Depth {
+    let moved = rest.iter().filter(|each| **each != 0.0).count();
+    let contact_alone = moved == 1 && rest[0] != 0.0;
+    match moved {
+        0 => Depth::Solved,
+        1 if *force == 0.0 => Depth::Solved,
+        1 if contact_alone && ends.contains(force) => Depth::Solved,
+        _ => Depth::Between,
+    }
 }
 
 fn at(force: f64, rest: &[f64]) -> Departure {

@@ -2,6 +2,8 @@
 
 use std::{fmt::Debug, sync::Arc};
 
+use rayon::prelude::*;
+
 use crate::{
     estimate::{
         ConeBeside, FacePoint, Failure, Flatness, InterfaceResult, Meeting, PressureResult,
@@ -56,6 +58,26 @@ pub(super) fn variable(plate: usize, last: usize) -> usize {
     }
 }
 
+/// How much of a state's path is wanted, and how well.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub(super) enum Depth {
+    /// Solved for itself.
+    Solved,
+    /// The same for source to sink alone; what tells the joint from the plates is not looked for.
+    SourceToSink,
+    /// Put together from those that are solved, where that is cheaper.
+    Between,
+}
+
+/// A state whose path is asked for.
+#[derive(Clone, Debug)]
+pub(super) struct State {
+    pub(super) variant: Variant,
+    pub(super) conditions: Conditions,
+    pub(super) factors: Factors,
+    pub(super) depth: Depth,
+}
+
 /// How the faces of an interface meet as a whole, for the surfaces of the draws.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub(in crate::estimate::chain) struct Met {
@@ -77,6 +99,23 @@ pub(super) trait Solver: Debug + Send + Sync {
         task: (Level, Variant),
         under: (&Conditions, &Factors),
     ) -> Result<Arc<dyn Solved>, Failure>;
+
+    /// Solves the contact alone, to be found when heat asks for it.
+    fn expect(&self, _: &Joint, _: (Level, Variant), _: &Conditions) -> Result<(), Failure> {
+        Ok(())
+    }
+
+    /// Paths of many states on one level for the draws, to about 1e-6.
+    ///
+    /// They differ in forces, faces, conductivities and variant; terminals are those of the first.
+    fn paths(&self, joint: &Joint, level: Level, states: &[State]) -> Result<Vec<Path>, Failure> {
+        let path = |state: &State| {
+            let under = (&state.conditions, &state.factors);
+            let solved = self.solved(joint, (level, state.variant), under)?;
+            Ok(solved.path().clone())
+        };
+        states.par_iter().map(path).collect()
+    }
 
     /// Makes ready for many forces of one pattern, N, over a range of factors on them.
     fn tabulate(
