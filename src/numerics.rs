@@ -8,6 +8,7 @@ pub mod bracket;
 pub mod columns;
 pub mod complementarity;
 pub mod condensation;
+pub mod distributions;
 pub mod elements;
 pub mod grading;
 pub mod interpolation;
