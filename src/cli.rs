@@ -8,6 +8,7 @@ mod drawings;
 mod estimate;
 mod explain;
 mod field;
+mod fit;
 mod hidden;
 mod input;
 mod list;
@@ -58,6 +59,7 @@ enum Command {
     Estimate(estimate::Estimate),
     Torque(torque::Torque),
     Draw(draw::Draw),
+    Fit(Box<fit::Fit>),
     List(list::List),
     Explain(explain::Explain),
     #[command(hide = true)]
@@ -110,6 +112,7 @@ impl Command {
             Self::Estimate(command) => command.run(console),
             Self::Torque(command) => command.run(console),
             Self::Draw(command) => command.run(console),
+            Self::Fit(command) => command.run(console),
             Self::List(command) => command.run(console),
             Self::Explain(command) => command.run(console),
             Self::Completions(command) => command.run(console),

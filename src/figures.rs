@@ -3,6 +3,7 @@
 mod axis;
 mod clip;
 mod cumulative;
+mod fit;
 mod flags;
 mod fonts;
 mod legend;
@@ -17,6 +18,7 @@ mod torque;
 mod warmth;
 
 pub use cumulative::{CumulativePlot, Curve, RadiusMark};
+pub use fit::{FitPlot, ProfilePlot};
 pub use plan::{
     DetailKind, FacePair, PlanBolt, PlanDetail, PlanMap, PlanOutline, PlanPair, PlanShape, Scale,
 };
@@ -49,6 +51,10 @@ pub enum Drawing {
     Cumulative(CumulativePlot),
     /// Resistance against torque.
     Torque(TorqueSweep),
+    /// Own readings with the law through them.
+    Fit(Box<FitPlot>),
+    /// Likelihood of an unknown over its range.
+    Profile(Box<ProfilePlot>),
 }
 
 /// Why a drawing cannot be made.
@@ -94,6 +100,8 @@ fn sheet(drawing: &Drawing) -> Result<sheet::Sheet, FigureError> {
         Drawing::Section(plot) => section::draw(plot),
         Drawing::Cumulative(plot) => cumulative::draw(plot),
         Drawing::Torque(sweep) => torque::draw(sweep),
+        Drawing::Fit(plot) => fit::draw(plot),
+        Drawing::Profile(plot) => fit::draw_profile(plot),
     }
 }
 

@@ -2,6 +2,7 @@
 
 pub mod card;
 pub mod catalogue;
+pub mod fit;
 pub mod json;
 pub mod listing;
 pub mod media;

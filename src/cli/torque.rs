@@ -7,14 +7,14 @@ use crate::{
         console::{Console, Layout, Outcome, Trouble},
         estimate::Draws,
         field::{self, Field},
-        output::{Existing, Target},
+        output::{self, Existing, Target},
     },
-    figures::{Drawing, Format},
+    figures::Drawing,
     report::{json, sweep},
     uncertainty::SweepOptions,
 };
 use clap::Args;
-use std::path::{Path, PathBuf};
+use std::path::PathBuf;
 
 /// Resistance against torque, with the torque that strength allows
 #[derive(Debug, Args)]
@@ -66,7 +66,7 @@ impl Torque {
         }
         let figure = match &self.out {
             Some(path) => Some((
-                format(path)?,
+                output::format(path)?,
                 Target::new(path, Existing::from_force(self.force))?,
             )),
             None => None,
@@ -106,21 +106,5 @@ impl Torque {
             console.result(&sweep::torque(&found))?;
         }
         Ok(Outcome::Done)
-    }
-}
-
-fn format(path: &Path) -> Result<Format, Trouble> {
-    let ending = path
-        .extension()
-        .and_then(|ending| ending.to_str())
-        .unwrap_or("")
-        .to_ascii_lowercase();
-    match ending.as_str() {
-        "svg" => Ok(Format::Svg),
-        "png" => Ok(Format::Png),
-        _ => Err(Trouble::usage(
-            format!("`{}` ends in neither .svg nor .png", path.display()),
-            "the ending chooses the format of the figure",
-        )),
     }
 }

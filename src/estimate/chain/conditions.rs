@@ -7,7 +7,7 @@ use crate::{
         chain::{Model, Warmth},
         surfaces,
     },
-    joint::MeasuredKind,
+    joint::{LawLoad, MeasuredKind, Tightening},
     resistance::Load,
 };
 
@@ -134,7 +134,7 @@ impl Chain<'_> {
             .collect();
         let forces: Vec<f64> = self.group_of.iter().map(|group| by_group[*group]).collect();
         let temperature = joint.service.cases[case].temperature;
-        let law = self.force_law(&forces, temperature);
+        let law = self.force_law(case, (&forces, temperature));
         let faces = (0..joint.interfaces())
             .map(|index| {
                 let place = (index, warmth.interface(index));
@@ -164,10 +164,13 @@ impl Chain<'_> {
     /// ```text
     /// h = p Σ G(F)/Σ F,   G = G₀ (F/F₀)ⁿ (T/T₀)ᵐ   so that ∫ h dA = Σ G, since ∫ p dA = Σ F
     /// ```
-    fn force_law(&self, forces: &[f64], temperature: f64) -> Option<f64> {
+    ///
+    /// Where the law is of torque, the reference force is what the reference torque would give
+    /// in service at nominal friction, for force goes in proportion to torque.
+    fn force_law(&self, case: usize, (forces, temperature): (&[f64], f64)) -> Option<f64> {
         let MeasuredKind::ForceLaw {
             conductance,
-            force,
+            load,
             force_exponent,
             temperature: reference,
             temperature_exponent,
@@ -176,12 +179,34 @@ impl Chain<'_> {
             return None;
         };
         let warmth = (temperature / reference).powf(temperature_exponent);
+        let references = match load {
+            LawLoad::Force(force) => vec![force; forces.len()],
+            LawLoad::Torque(torque) => self.forces_at_torque(case, torque),
+        };
         let whole: f64 = forces
             .iter()
-            .map(|each| conductance * (each / force).powf(force_exponent) * warmth)
+            .zip(&references)
+            .map(|(each, force)| conductance * (each / force).powf(force_exponent) * warmth)
             .sum();
         let carried: f64 = forces.iter().sum();
         Some(if carried > 0.0 { whole / carried } else { 0.0 })
+    }
+
+    /// Force in service of every bolt that a torque would give at nominal friction, N.
+    fn forces_at_torque(&self, case: usize, torque: f64) -> Vec<f64> {
+        let nominal = self.nominal_forces(case, self.joint());
+        let stated = self.group_of.iter().map(|group| {
+            match &self.joint().fasteners[*group].tightening {
+                Tightening::Torque(stated) => stated.torque,
+                // The reader refuses such a law beside a preload.
+                Tightening::Preload(_) => torque,
+            }
+        });
+        nominal
+            .iter()
+            .zip(stated)
+            .map(|(force, stated)| force * torque / stated)
+            .collect()
     }
 
     /// Conductance of each bolt's shank from head to nut, W/K.
