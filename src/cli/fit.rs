@@ -437,7 +437,7 @@ fn stem(name: &str) -> String {
 }
 
 fn listed() -> String {
-    let words: Vec<&str> = WORDS.iter().map(|word| word.word).collect();
+    let words: Vec<&str> = WORDS.iter().map(|word| word.name).collect();
     words.join(", ")
 }
 
@@ -445,10 +445,10 @@ fn listed() -> String {
 fn words() -> String {
     let mut text = String::new();
     for word in WORDS {
-        let _ = writeln!(text, "{:<20} {}{}", word.word, word.meaning, word.between());
+        let _ = writeln!(text, "{:<20} {}{}", word.name, word.meaning, word.between());
     }
     text.push_str(
-        "any other             a field of the joint file as --set names it, with --from and --to\n",
+        "any field            of the joint file as --set names it, with --from and --to\n",
     );
     text
 }

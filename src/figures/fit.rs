@@ -15,7 +15,7 @@ use crate::{
         profile::{Verdict, Walk},
         unknown::{Answer, Question},
     },
-    report::fit::unit,
+    report::fit::{measured, unit},
 };
 
 const MARGIN: f64 = 20.0;
@@ -89,11 +89,11 @@ pub(super) fn draw(plot: &FitPlot) -> Result<Sheet, FigureError> {
         let room = (high / low).max(1.02).powf(ROOM);
         Axis::logarithmic(low / room, high * room)
     });
-    let y_title = format!("{}, {y_unit}", y_quantity_name(series));
+    let y_title = format!("{}, {y_unit}", measured(series.ordinate));
     let mut sheet = Sheet::new(WIDTH);
     let subtitle = format!(
         "{} against {}, with 90 % bands",
-        y_quantity_name(series),
+        measured(series.ordinate),
         series.abscissa.name()
     );
     let top = sheet.header(&plot.title, &subtitle) + 8.0;
@@ -162,14 +162,6 @@ pub(super) fn draw(plot: &FitPlot) -> Result<Sheet, FigureError> {
     };
     sheet.size[1] = legend(&mut sheet, room, &key(series)) + 12.0;
     Ok(sheet)
-}
-
-fn y_quantity_name(series: &Series) -> &'static str {
-    if series.ordinate.is_per_area() {
-        "contact conductance"
-    } else {
-        "conductance"
-    }
 }
 
 fn colours() -> [Colour; 2] {
@@ -264,7 +256,7 @@ pub(super) fn draw_profile(plot: &ProfilePlot) -> Result<Sheet, FigureError> {
         Verdict::Undetermined => "NOT determined by these readings",
     };
     let name = asked.unknown.name();
-    let top = sheet.header(&answer.title, &format!("{name}: {verdict}")) + 8.0;
+    let top = sheet.header(&answer.title, &format!("{verdict}: {name}")) + 8.0;
     let frame = Frame {
         left: MARGIN + axis::side_room(&y_axis, HEIGHT),
         top,
@@ -286,7 +278,7 @@ pub(super) fn draw_profile(plot: &ProfilePlot) -> Result<Sheet, FigureError> {
         (&y_axis, "−2 ln likelihood above its least"),
         Grid::Faint,
     );
-    let x_title = format!("value, as {}", asked.unknown.shown(range.at(1.0)));
+    let x_title = format!("value, {}", asked.unknown.scale());
     axis::bottom(&mut sheet, frame, (&x_axis, Some(&x_title)));
     let level = up(answer.threshold);
     sheet.line(&[[frame.left, level], [frame.right, level]], THRESHOLD);
@@ -294,6 +286,7 @@ pub(super) fn draw_profile(plot: &ProfilePlot) -> Result<Sheet, FigureError> {
         .profile
         .curve
         .iter()
+        .step_by(4)
         .map(|(share, value)| [across(*share), up(value.min(1e3 * answer.threshold))])
         .collect();
     let curve = Stroke::solid(2.0, ramp::colour(0.85));

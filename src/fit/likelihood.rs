@@ -56,15 +56,10 @@ impl Nuisance {
     }
 
     /// The same with an error of the model that moves all loads alike, as a share.
+    #[must_use]
     pub fn with_error(mut self, share: f64) -> Self {
         self.covariance.add_scalar_mut(share * share);
         self
-    }
-
-    /// One standard deviation of the mean over all loads, in ln.
-    pub fn deviation(&self) -> f64 {
-        let levels = self.offset.len() as f64;
-        self.covariance.sum().max(0.0).sqrt() / levels
     }
 }
 

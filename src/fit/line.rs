@@ -129,7 +129,7 @@ mod tests {
         rows.iter().map(point).collect()
     }
 
-    /// NIST StRD, data set Norris: data and certified values as public test suites quote them
+    /// NIST's reference data set Norris: data and certified values as public test suites quote them
     /// (seen there, not on the pages of NIST).
     #[test]
     fn certified_regression_is_met() {

@@ -127,7 +127,7 @@ fn by_median_line(points: &[Point]) -> Vec<usize> {
     let slopes = points.iter().enumerate().flat_map(|(at, one)| {
         points[at + 1..]
             .iter()
-            .filter(|other| other.x != one.x)
+            .filter(|other| (other.x - one.x).abs() > 0.0)
             .map(|other| (other.y - one.y) / (other.x - one.x))
     });
     let slope = median(slopes.collect()).unwrap_or(0.0);
@@ -162,7 +162,7 @@ mod tests {
     }
 
     /// First word and Gesell score of 21 children (Mickey, Dunn & Clark 1967): data as public
-    /// scripts give them from Moore & McCabe 1993 (seen there). Child 19 stands apart with 3.607,
+    /// scripts give them from Moore and McCabe, 1993 (seen there). Child 19 stands apart with 3.607,
     /// from memory of the textbooks and recomputed with NumPy; child 18 has leverage alone.
     #[test]
     fn the_child_of_the_textbook_stands_apart() {

@@ -56,7 +56,7 @@ impl MonotoneTable {
             levelled: rows
                 .iter()
                 .zip(&level)
-                .filter(|(row, y)| row.y != **y)
+                .filter(|(row, y)| (row.y - **y).abs() > 0.0)
                 .count(),
             rows: rows
                 .iter()

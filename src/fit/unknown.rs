@@ -4,6 +4,8 @@ mod bench;
 mod cautions;
 mod words;
 
+pub(crate) use cautions::moved;
+
 pub use bench::{Bench, Reader};
 pub use words::{Template, Unknown, WORDS};
 
@@ -182,7 +184,9 @@ pub fn fit(bench: &Bench, asked: &Question, readings: &Readings) -> Result<Answe
             .collect(),
         interpolation,
         measured: likelihood.measured,
-        other: other.nuisance.deviation(),
+        other: (likelihood.whole.powi(2) - likelihood.measured.powi(2))
+            .max(0.0)
+            .sqrt(),
         whole: likelihood.whole,
         scatter,
         inputs: other.inputs,

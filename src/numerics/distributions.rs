@@ -38,10 +38,10 @@ pub fn student_quantile(p: f64, degrees: f64) -> f64 {
     if degrees > NORMAL_FROM {
         return normal_quantile(p);
     }
-    if p == 0.5 {
+    let tails = 2.0 * p.min(1.0 - p);
+    if tails >= 1.0 {
         return 0.0;
     }
-    let tails = 2.0 * p.min(1.0 - p);
     let (mut low, mut high) = (0.0, 1.0);
     while student_tails(high, degrees) > tails && high < 1e300 {
         low = high;
@@ -74,7 +74,7 @@ pub fn chi_squared_tail(x: f64, degrees: f64) -> f64 {
     upper_gamma(0.5 * degrees, 0.5 * x)
 }
 
-/// Regularised incomplete beta function I_x(a, b) by its continued fraction (Lentz).
+/// Regularised incomplete beta function `I_x(a, b)` by its continued fraction (Lentz).
 fn incomplete_beta((a, b): (f64, f64), x: f64) -> f64 {
     if x <= 0.0 {
         return 0.0;
@@ -161,8 +161,8 @@ mod tests {
     fn tails_are_those_of_scipy() {
         for (t, degrees, tails) in [
             (0.3, 1.0, 8.144528418445154e-01),
-            (2.0, 3.0, 1.393259685588430e-01),
-            (4.7, 9.0, 1.120170451419860e-03),
+            (2.0, 3.0, 1.39325968558843e-1),
+            (4.7, 9.0, 1.12017045141986e-3),
             (12.0, 30.0, 5.580185415199261e-13),
         ] {
             let found = student_tails(t, degrees);
@@ -200,7 +200,7 @@ mod tests {
                 assert!((back - expected).abs() < 1e-13, "{degrees} {p} {back}");
             }
         }
-        assert_eq!(student_quantile(0.5, 3.0), 0.0);
+        assert!(student_quantile(0.5, 3.0).abs() < 1e-300);
         assert!((student_quantile(0.95, f64::INFINITY) - normal_quantile(0.95)).abs() < 1e-15);
     }
 }

@@ -4,7 +4,7 @@ use crate::{
     fit::{
         Abscissa, Branch, Hysteresis, Ordinate, PowerLaw, Series, Shape,
         profile::Verdict,
-        unknown::{Answer, Question},
+        unknown::{Answer, Question, moved},
     },
     report::{
         json,
@@ -37,6 +37,15 @@ pub fn fitted(ordinate: Ordinate) -> &'static str {
     if ordinate.is_per_area() { "h" } else { "G" }
 }
 
+/// What was fitted, in words.
+pub fn measured(ordinate: Ordinate) -> &'static str {
+    if ordinate.is_per_area() {
+        "contact conductance"
+    } else {
+        "conductance"
+    }
+}
+
 /// The sign of what was varied.
 fn sign(abscissa: Abscissa) -> &'static str {
     match abscissa {
@@ -51,7 +60,7 @@ pub fn series(series: &Series, name: &str) -> String {
     let mut text = format!(
         "{}: {} against {}\n",
         plain(name),
-        series.ordinate.fitted().name(),
+        measured(series.ordinate),
         series.abscissa.name()
     );
     for branch in &series.branches {
@@ -193,9 +202,9 @@ fn bands(series: &Series, law: &PowerLaw) -> String {
     let right = Side::Right;
     aligned(
         &[
-            (&format!("{} {x_unit}\n", series.abscissa.name()), right),
+            (&format!("{}\n{x_unit}", series.abscissa.name()), right),
             (&format!("{y}\n5 %"), right),
-            ("law\n", right),
+            ("\nlaw", right),
             ("\n95 %", right),
             ("another reading\n5 %", right),
             ("\n95 %", right),
@@ -240,8 +249,8 @@ pub fn answer(asked: &Question, answer: &Answer, name: &str) -> String {
     );
     let _ = writeln!(
         text,
-        "\nover the range the model moves by {}; readings leave {} open, other inputs {}, together {}\n(one standard deviation; numerical error {} counted among the other inputs)",
-        percent(profile.movement),
+        "\nover the range the model moves {}; readings leave {} open, other inputs {}, together {}\n(one standard deviation; numerical error {} counted among the other inputs)",
+        moved(profile.movement),
         percent(answer.measured),
         percent(answer.other),
         percent(answer.whole),
@@ -311,7 +320,7 @@ pub fn series_json(series: &Series, (name, block): (&str, &str)) -> Value {
         "file": name,
         "fit": "law",
         "abscissa": series.abscissa.name(),
-        "ordinate": series.ordinate.fitted().name(),
+        "ordinate": measured(series.ordinate),
         "branches": branches,
         "hysteresis": series.hysteresis.map(|found| json!({
             "at": found.at,

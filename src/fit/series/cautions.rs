@@ -3,7 +3,7 @@
 use crate::{
     diagnostic::{Caution, registry},
     fit::{
-        power::PowerLaw,
+        power::{Bend, PowerLaw},
         series::{Branch, Series, Shape},
     },
     units::show,
@@ -83,7 +83,7 @@ fn outliers(series: &Series, (branch, named): (&Branch, &str), found: &mut Vec<C
 }
 
 fn of_law(law: &PowerLaw, named: &str, found: &mut Vec<Caution>) {
-    if let Some(bend) = law.bend.filter(|bend| bend.shows()) {
+    if let Some(bend) = law.bend.filter(Bend::shows) {
         found.push(caution(
             "fit/curved",
             format!(

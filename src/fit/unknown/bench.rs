@@ -179,7 +179,7 @@ impl Bench<'_> {
                     numerical_error: chain.discretisation_error(&state)?,
                     title: chain.joint().title.clone(),
                     field: chain.field_name(),
-                    planes: planes(chain, (asked.plane, self.case))?,
+                    planes: planes(chain, (asked.plane, self.case)),
                 });
             }
             Ok(())
@@ -283,7 +283,7 @@ fn conductance(state: &State, plane: Plane) -> Result<f64, Failure> {
 }
 
 /// Between which planes the conductance stands.
-fn planes(chain: &Chain, (plane, case): (Plane, usize)) -> Result<String, Failure> {
+fn planes(chain: &Chain, (plane, case): (Plane, usize)) -> String {
     let joint = chain.joint();
     let case = joint.service.cases[case].name;
     let ends = match plane {
@@ -295,5 +295,5 @@ fn planes(chain: &Chain, (plane, case): (Plane, usize)) -> Result<String, Failur
             format!("source to sink: {} to {}", nominal.0, nominal.1)
         }
     };
-    Ok(format!("{ends}; {case} case"))
+    format!("{ends}; {case} case")
 }

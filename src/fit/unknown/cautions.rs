@@ -1,5 +1,7 @@
 //! Whether a fit of one unknown says anything, and why not.
 
+use std::fmt::Write;
+
 use crate::{
     diagnostic::{Caution, registry},
     fit::{
@@ -78,20 +80,30 @@ pub(super) fn of(asked: &Question, answer: &Answer) -> Vec<Caution> {
     found
 }
 
+/// How far a conductance moves, from its change in ln.
+pub(crate) fn moved(ln: f64) -> String {
+    if ln < std::f64::consts::LN_2 {
+        format!("by {:.1} %", 100.0 * ln.exp_m1())
+    } else {
+        format!("by a factor {:.3}", ln.exp())
+    }
+}
+
 /// Why an interval is as wide as it is.
 fn why(answer: &Answer) -> String {
     let percent = |ln: f64| 100.0 * ln.exp_m1();
+    let moved = moved(answer.profile.movement);
     let mut text = format!(
-        "Over the whole range the model moves by {:.1} %, while readings leave {:.1} % open and other inputs {:.1} % (one standard deviation)",
-        percent(answer.profile.movement),
+        "Over the whole range the model moves {moved}, while readings leave {:.1} % open and other inputs {:.1} % (one standard deviation)",
         percent(answer.measured),
         percent(answer.other),
     );
     if answer.contact_share < SPREADING {
-        text.push_str(&format!(
+        let _ = write!(
+            text,
             "; the faces are only {:.1} % of the measured resistance, spreading in the plates is the rest",
             100.0 * answer.contact_share
-        ));
+        );
     }
     text
 }

@@ -9,7 +9,7 @@ use crate::{
 #[derive(Clone, Copy, Debug)]
 pub struct Word {
     /// The word.
-    pub word: &'static str,
+    pub name: &'static str,
     /// What it stands for.
     pub meaning: &'static str,
     /// Between which values; none for an uncertain input, which has its own range.
@@ -43,55 +43,55 @@ enum Place {
 /// The words, in the order in which force and heat flow.
 pub const WORDS: &[Word] = &[
     Word {
-        word: "friction",
+        name: "friction",
         meaning: "friction of thread and head of every bolt, alike",
         range: Some(["0.06", "0.35"]),
         place: Place::EveryFastener(&["friction.thread", "friction.head"]),
     },
     Word {
-        word: "roughness",
+        name: "roughness",
         meaning: "roughness of every plate's finish, alike",
         range: Some(["Rq 0.1 µm", "Rq 10 µm"]),
         place: Place::EveryPlate("finish.roughness"),
     },
     Word {
-        word: "slope",
+        name: "slope",
         meaning: "asperity slope of every plate's finish, alike",
         range: Some(["0.02", "0.4"]),
         place: Place::EveryPlate("finish.slope"),
     },
     Word {
-        word: "flatness",
+        name: "flatness",
         meaning: "bow of the first plate",
         range: Some(["-100 µm", "100 µm"]),
         place: Place::FirstPlate("bow"),
     },
     Word {
-        word: "bond_line",
+        name: "bond_line",
         meaning: "bond line of the filler",
         range: Some(["5 µm", "500 µm"]),
         place: Place::Path("filler.bond_line"),
     },
     Word {
-        word: "filler_conductivity",
+        name: "filler_conductivity",
         meaning: "conductivity of the filler",
         range: Some(["0.1 W/(m·K)", "20 W/(m·K)"]),
         place: Place::Path("filler.conductivity"),
     },
     Word {
-        word: "hardness",
+        name: "hardness",
         meaning: "hardness of the faces, −1 low to +1 high in its range",
         range: None,
         place: Place::Input(&["hardness of the faces"]),
     },
     Word {
-        word: "law",
+        name: "law",
         meaning: "law of the solid spots or own measurements, in standard deviations",
         range: None,
         place: Place::Input(&["law of the solid spots", "own measurements"]),
     },
     Word {
-        word: "filler",
+        name: "filler",
         meaning: "resistance of the filler, in standard deviations",
         range: None,
         place: Place::Input(&["filler"]),
@@ -123,6 +123,14 @@ impl Unknown {
         match self {
             Self::Fields { template, .. } => template.with(number),
             Self::Input { .. } => number.to_owned(),
+        }
+    }
+
+    /// How its values are written, with `…` for the number.
+    pub fn scale(&self) -> String {
+        match self {
+            Self::Fields { template, .. } => template.with("…"),
+            Self::Input { .. } => "place in its range".to_owned(),
         }
     }
 
@@ -188,7 +196,7 @@ pub(super) fn named(
     asked: &str,
     ends: [Option<&str>; 2],
 ) -> Result<(Unknown, [f64; 2]), Failure> {
-    let word = WORDS.iter().find(|word| word.word == asked);
+    let word = WORDS.iter().find(|word| word.name == asked);
     let paths = match word.map(|word| word.place) {
         Some(Place::Input(names)) => return input(joint, asked, names, ends),
         Some(Place::EveryPlate(field)) => joint
@@ -210,7 +218,7 @@ pub(super) fn named(
         Some(Place::Path(path)) => vec![path.to_owned()],
         None if asked.contains('.') => vec![asked.to_owned()],
         None => {
-            let words: Vec<&str> = WORDS.iter().map(|word| word.word).collect();
+            let words: Vec<&str> = WORDS.iter().map(|word| word.name).collect();
             return Err(question(
                 format!("`{asked}` is no unknown"),
                 format!(
