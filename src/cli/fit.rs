@@ -48,7 +48,7 @@ Examples:
 #[command(after_help = EXAMPLES)]
 pub struct Fit {
     /// Table of readings, after a joint file where --unknown asks for one; - reads standard input
-    #[arg(required = true, num_args = 1..=2, value_name = "FILE")]
+    #[arg(required_unless_present = "unknown", num_args = 1..=2, value_name = "FILE")]
     files: Vec<PathBuf>,
     /// What is laid through the readings
     #[arg(
