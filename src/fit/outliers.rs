@@ -162,7 +162,7 @@ mod tests {
     }
 
     /// First word and Gesell score of 21 children (Mickey, Dunn & Clark 1967): data as public
-    /// scripts give them from Moore and McCabe, 1993 (seen there). Child 19 stands apart with 3.607,
+    /// scripts give them from Moore and others 1993 (seen there). Child 19 stands apart with 3.607,
     /// from memory of the textbooks and recomputed with NumPy; child 18 has leverage alone.
     #[test]
     fn the_child_of_the_textbook_stands_apart() {

@@ -133,7 +133,7 @@ fn faults_of_a_table_are_told_at_their_places() {
 #[test]
 fn strict_turns_cautions_into_three_and_left_out_lines_are_told() {
     let folder = folder();
-    let rows: String = (1..=10)
+    let rows: Vec<String> = (1..=10)
         .map(|at| {
             let wiggle = 1.0 + 0.01 * f64::from(at % 3 - 1);
             let apart = if at == 6 { 1.5 } else { 1.0 };
@@ -143,6 +143,7 @@ fn strict_turns_cautions_into_three_and_left_out_lines_are_told() {
             )
         })
         .collect();
+    let rows = rows.concat();
     fs::write(
         folder.path().join("apart.csv"),
         format!("p [MPa], h [W/(m²·K)]\n{rows}"),

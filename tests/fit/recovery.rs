@@ -118,7 +118,7 @@ fn a_friction_is_found_from_exact_readings_and_refinement_is_checked() {
     let sets = sets.map(str::to_owned);
     let joint = joint::read_with(&text, &sets).expect("a joint");
     let chain = Chain::new(&joint).expect("a chain");
-    let rows: String = LOADS
+    let rows: Vec<String> = LOADS
         .iter()
         .map(|torque| {
             let chain = chain.with_torque(0, *torque).expect("by torque");
@@ -126,6 +126,7 @@ fn a_friction_is_found_from_exact_readings_and_refinement_is_checked() {
             format!("{torque}, {}, 0.5\n", state.path.source_to_sink)
         })
         .collect();
+    let rows = rows.concat();
     let found = answer(
         FILE,
         &[],

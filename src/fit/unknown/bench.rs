@@ -145,12 +145,16 @@ impl Bench<'_> {
         self.watch.tell("what the other inputs leave open");
         self.each(&asked.unknown.sets(value), loads, |chain| {
             let all = inputs(chain);
-            let own = |input: &&Input| matches!(&asked.unknown, Unknown::Input { name } if *name == input.name);
             let mut middle = Realisation::default();
-            if let Some(input) = all.iter().find(own) {
+            if let Unknown::Input { name } = &asked.unknown
+                && let Some(input) = all.iter().find(|input| input.name == *name)
+            {
                 put(input, &mut middle, value);
             }
-            let others: Vec<&Input> = all.iter().filter(|input| !own(input)).collect();
+            let others: Vec<&Input> = all
+                .iter()
+                .filter(|input| !asked.unknown.replaces(input.name))
+                .collect();
             let state = chain.state(self.case, &middle)?;
             nominal.push(conductance(&state, asked.plane)?);
             if draws > 0 {

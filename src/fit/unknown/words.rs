@@ -14,6 +14,8 @@ pub struct Word {
     pub meaning: &'static str,
     /// Between which values; none for an uncertain input, which has its own range.
     range: Option<[&'static str; 2]>,
+    /// How the names of the uncertain inputs begin that it takes the place of.
+    own: &'static [&'static str],
     place: Place,
 }
 
@@ -46,54 +48,63 @@ pub const WORDS: &[Word] = &[
         name: "friction",
         meaning: "friction of thread and head of every bolt, alike",
         range: Some(["0.06", "0.35"]),
+        own: &["friction"],
         place: Place::EveryFastener(&["friction.thread", "friction.head"]),
     },
     Word {
         name: "roughness",
         meaning: "roughness of every plate's finish, alike",
         range: Some(["Rq 0.1 µm", "Rq 10 µm"]),
+        own: &["roughness"],
         place: Place::EveryPlate("finish.roughness"),
     },
     Word {
         name: "slope",
         meaning: "asperity slope of every plate's finish, alike",
         range: Some(["0.02", "0.4"]),
+        own: &["asperity slope"],
         place: Place::EveryPlate("finish.slope"),
     },
     Word {
         name: "flatness",
         meaning: "bow of the first plate",
         range: Some(["-100 µm", "100 µm"]),
+        own: &[],
         place: Place::FirstPlate("bow"),
     },
     Word {
         name: "bond_line",
         meaning: "bond line of the filler",
         range: Some(["5 µm", "500 µm"]),
+        own: &[],
         place: Place::Path("filler.bond_line"),
     },
     Word {
         name: "filler_conductivity",
         meaning: "conductivity of the filler",
         range: Some(["0.1 W/(m·K)", "20 W/(m·K)"]),
+        own: &[],
         place: Place::Path("filler.conductivity"),
     },
     Word {
         name: "hardness",
         meaning: "hardness of the faces, −1 low to +1 high in its range",
         range: None,
+        own: &[],
         place: Place::Input(&["hardness of the faces"]),
     },
     Word {
         name: "law",
         meaning: "law of the solid spots or own measurements, in standard deviations",
         range: None,
+        own: &[],
         place: Place::Input(&["law of the solid spots", "own measurements"]),
     },
     Word {
         name: "filler",
         meaning: "resistance of the filler, in standard deviations",
         range: None,
+        own: &[],
         place: Place::Input(&["filler"]),
     },
 ];
@@ -107,6 +118,8 @@ pub enum Unknown {
         paths: Vec<String>,
         /// How a value is written.
         template: Template,
+        /// How the names of the uncertain inputs begin that it takes the place of.
+        own: &'static [&'static str],
     },
     /// An uncertain input, where it lies in its own range.
     Input {
@@ -142,10 +155,20 @@ impl Unknown {
         }
     }
 
+    /// Whether it takes the place of an uncertain input of this name.
+    pub(super) fn replaces(&self, input: &str) -> bool {
+        match self {
+            Self::Fields { own, .. } => own.iter().any(|start| input.starts_with(start)),
+            Self::Input { name } => *name == input,
+        }
+    }
+
     /// Overrides that give the joint a value.
     pub fn sets(&self, value: f64) -> Vec<String> {
         match self {
-            Self::Fields { paths, template } => paths
+            Self::Fields {
+                paths, template, ..
+            } => paths
                 .iter()
                 .map(|path| format!("{path}={}", template.with(&value.to_string())))
                 .collect(),
@@ -249,7 +272,13 @@ pub(super) fn named(
             "write both ends in one unit: `--from \"0.2 mm\" --to \"6 mm\"`",
         ));
     }
-    Ok((Unknown::Fields { paths, template }, [low, high]))
+    let own = word.map_or(&[][..], |word| word.own);
+    let unknown = Unknown::Fields {
+        paths,
+        template,
+        own,
+    };
+    Ok((unknown, [low, high]))
 }
 
 /// An uncertain input of this joint; its ends are numbers.
