@@ -183,13 +183,13 @@ fn fitted() -> FitPlot {
         for (direction, exponent) in [("loading", 0.9), ("unloading", 0.6)] {
             let h =
                 9000.0 * apart * f64::from(at).powf(exponent) * (1.0 + 0.01 * f64::from(at % 3));
-            writeln!(text, "{at}, {h}, 2, {direction}").unwrap();
+            writeln!(text, "{at}, {h}, 2, {direction}").expect("a text takes it");
         }
     }
-    let readings = Readings::read(&text).unwrap();
+    let readings = Readings::read(&text).expect("a table");
     FitPlot {
         title: "Rig".into(),
-        series: Series::of(&readings, Form::Law).unwrap(),
+        series: Series::of(&readings, Form::Law).expect("two laws"),
     }
 }
 
