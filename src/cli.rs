@@ -10,6 +10,7 @@ mod drivers;
 mod estimate;
 mod explain;
 mod field;
+mod fit;
 mod hidden;
 mod input;
 mod list;
@@ -61,6 +62,7 @@ enum Command {
     Torque(torque::Torque),
     Drivers(drivers::Drivers),
     Draw(draw::Draw),
+    Fit(Box<fit::Fit>),
     List(list::List),
     Explain(explain::Explain),
     #[command(hide = true)]
@@ -114,6 +116,7 @@ impl Command {
             Self::Torque(command) => command.run(console),
             Self::Drivers(command) => command.run(console),
             Self::Draw(command) => command.run(console),
+            Self::Fit(command) => command.run(console),
             Self::List(command) => command.run(console),
             Self::Explain(command) => command.run(console),
             Self::Completions(command) => command.run(console),

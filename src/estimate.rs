@@ -248,7 +248,7 @@ pub fn nominal(chain: &Chain, options: &Options) -> Result<Estimate, Failure> {
     let cases = (0..joint.service.cases.len())
         .map(|case| case_result(chain, case, error))
         .collect::<Result<Vec<CaseResult>, Failure>>()?;
-    let (source_plane, sink_plane) = planes(joint);
+    let (source_plane, sink_plane) = plane_names(joint);
     Ok(Estimate {
         title: joint.title.clone(),
         seed: options.seed,
@@ -350,7 +350,7 @@ fn results(path: &Path) -> Results {
 }
 
 /// Names of the planes between which source to sink stands.
-fn planes(joint: &Joint) -> (String, String) {
+pub(crate) fn plane_names(joint: &Joint) -> (String, String) {
     let warm = &joint.warm().name;
     let cold = &joint.cold().name;
     let source = match joint.source.alone().map(|source| source.zone) {

@@ -3,6 +3,7 @@
 mod axis;
 mod clip;
 mod cumulative;
+mod fit;
 mod flags;
 mod fonts;
 mod legend;
@@ -18,6 +19,7 @@ mod torque;
 mod warmth;
 
 pub use cumulative::{CumulativePlot, Curve, RadiusMark};
+pub use fit::{FitPlot, ProfilePlot};
 pub use plan::{
     DetailKind, FacePair, PlanBolt, PlanDetail, PlanMap, PlanOutline, PlanPair, PlanShape, Scale,
 };
@@ -52,6 +54,10 @@ pub enum Drawing {
     Torque(TorqueSweep),
     /// What each input alone does to an answer.
     Tornado(Box<Ranking>),
+    /// Own readings with the law through them.
+    Fit(Box<FitPlot>),
+    /// Likelihood of an unknown over its range.
+    Profile(Box<ProfilePlot>),
 }
 
 /// Why a drawing cannot be made.
@@ -98,6 +104,8 @@ fn sheet(drawing: &Drawing) -> Result<sheet::Sheet, FigureError> {
         Drawing::Cumulative(plot) => cumulative::draw(plot),
         Drawing::Torque(sweep) => torque::draw(sweep),
         Drawing::Tornado(ranking) => tornado::draw(ranking),
+        Drawing::Fit(plot) => fit::draw(plot),
+        Drawing::Profile(plot) => fit::draw_profile(plot),
     }
 }
 

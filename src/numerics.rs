@@ -20,3 +20,4 @@ pub mod sampling;
 pub mod scattered;
 pub mod special;
 pub mod surface;
+pub mod test_statistics;

@@ -3,6 +3,7 @@
 pub mod card;
 pub mod catalogue;
 pub mod drivers;
+pub mod fit;
 pub mod json;
 pub mod listing;
 pub mod media;

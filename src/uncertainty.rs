@@ -22,7 +22,7 @@ mod worst;
 pub use answer::Answer;
 pub use draws::{Draws, draws};
 pub use indices::{Bases, FEWEST_BASES, Index, Share, indices};
-pub use inputs::{Input, Moves, inputs};
+pub use inputs::{Input, Moves, NUMERICAL, inputs};
 pub use media::{InMedium, in_media};
 pub use ranking::{Ranked, Ranking, RankingOptions, Scale, Target, ranking};
 pub use sweep::{CONFIDENCE, SweepOptions, sweep_along, torque_sweep};

@@ -66,7 +66,7 @@ ringsum --help                 lists every command
 fn help_lists_the_commands_and_hides_those_for_packagers() {
     let help = stdout(&ringsum().arg("--help").assert().code(0).stderr_eq(""));
     for command in [
-        "new", "check", "estimate", "torque", "drivers", "draw", "list", "explain",
+        "new", "check", "estimate", "torque", "drivers", "draw", "fit", "list", "explain",
     ] {
         assert!(
             help.contains(&format!("\n  {command}")),
@@ -91,6 +91,7 @@ fn every_command_has_help_and_usage_errors_go_to_standard_error() {
         "torque",
         "drivers",
         "draw",
+        "fit",
         "list",
         "explain",
         "completions",
@@ -109,7 +110,7 @@ fn every_command_has_help_and_usage_errors_go_to_standard_error() {
             .stdout_eq("");
         assert!(stderr(&wrong).contains("--nonsense"));
     }
-    for command in ["check", "estimate", "torque", "drivers", "draw"] {
+    for command in ["check", "estimate", "torque", "drivers", "draw", "fit"] {
         ringsum().arg(command).assert().code(2).stdout_eq("");
     }
 }

@@ -5,14 +5,17 @@ mod heat;
 #[path = "figures/tornado.rs"]
 mod tornado;
 
+use std::fmt::Write;
+
 use ringsum::{
     estimate::{
         Band, End, FieldMap, Range, Side, TorqueLimit, TorquePoint, TorqueSweep, TorqueWindow,
     },
     figures::{
-        CumulativePlot, Curve, DetailKind, Drawing, FigureError, Format, PlanBolt, PlanDetail,
-        PlanMap, PlanOutline, PlanPair, PlanShape, RadiusMark, png, render, svg,
+        CumulativePlot, Curve, DetailKind, Drawing, FigureError, FitPlot, Format, PlanBolt,
+        PlanDetail, PlanMap, PlanOutline, PlanPair, PlanShape, RadiusMark, png, render, svg,
     },
+    fit::{Readings, Series, series::Form},
     joint::Limit,
 };
 
@@ -216,6 +219,24 @@ fn sweep() -> TorqueSweep {
     }
 }
 
+/// Readings with a law, bands, error bars, two branches and one that stands apart.
+fn fitted() -> FitPlot {
+    let mut text = String::from("p [MPa], h [W/(m²·K)], sigma [%], direction\n");
+    for at in 1..9 {
+        let apart = if at == 5 { 1.9 } else { 1.0 };
+        for (direction, exponent) in [("loading", 0.9), ("unloading", 0.6)] {
+            let h =
+                9000.0 * apart * f64::from(at).powf(exponent) * (1.0 + 0.01 * f64::from(at % 3));
+            writeln!(text, "{at}, {h}, 2, {direction}").expect("a text takes it");
+        }
+    }
+    let readings = Readings::read(&text).expect("a table");
+    FitPlot {
+        title: "Rig".into(),
+        series: Series::of(&readings, Form::Law).expect("two laws"),
+    }
+}
+
 fn every_drawing() -> Vec<Drawing> {
     vec![
         Drawing::Plan(furnished(PlanMap::pressure("Box on panel", &field()))),
@@ -223,6 +244,7 @@ fn every_drawing() -> Vec<Drawing> {
         Drawing::Cumulative(cumulative(1)),
         Drawing::Cumulative(cumulative(5)),
         Drawing::Torque(sweep()),
+        Drawing::Fit(Box::new(fitted())),
         Drawing::PressureAndGap(Box::new(pair())),
         Drawing::Plan(furnished(
             PlanMap::gap("Box on panel", &solved()).expect("a solved field knows its gap"),
@@ -514,6 +536,8 @@ fn hostile_titles_stay_text() {
                 ranking.title = HOSTILE.repeat(40);
                 ranking.inputs[0].input = HOSTILE;
             }
+            Drawing::Fit(plot) => plot.title = HOSTILE.repeat(40),
+            Drawing::Profile(plot) => plot.answer.title = HOSTILE.repeat(40),
         }
         let document = svg(&drawing).unwrap();
         texts(&document);

@@ -15,7 +15,6 @@ use crate::{
     uncertainty::{self, InMedium, Ranking, RankingOptions, SweepOptions, Verification},
     units::{self, Quantity},
 };
-use std::path::Path;
 
 /// A joint, the field it is to stand on, and who is told while it is solved.
 #[derive(Clone, Debug)]
@@ -209,23 +208,6 @@ pub fn torque(text: &str) -> Result<f64, String> {
         Some(help) => format!("{}; {help}", fault.message),
         None => fault.message,
     })
-}
-
-/// The format of a figure by the ending of its file.
-pub fn format(path: &Path) -> Result<Format, Trouble> {
-    let ending = path
-        .extension()
-        .and_then(|ending| ending.to_str())
-        .unwrap_or("")
-        .to_ascii_lowercase();
-    match ending.as_str() {
-        "svg" => Ok(Format::Svg),
-        "png" => Ok(Format::Png),
-        _ => Err(Trouble::usage(
-            format!("`{}` ends in neither .svg nor .png", path.display()),
-            "the ending chooses the format of the figure",
-        )),
-    }
 }
 
 /// A share of the draws from the command line, 1.

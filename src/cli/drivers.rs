@@ -7,7 +7,7 @@ use crate::{
         console::{Console, Layout, Outcome, Trouble},
         draws,
         field::{self, Field},
-        output::{Existing, Target},
+        output::{self, Existing, Target},
     },
     estimate::Options,
     figures::Drawing,
@@ -108,7 +108,7 @@ impl Drivers {
     pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
         let figure = match &self.draw {
             Some(path) => Some((
-                chain::format(path)?,
+                output::format(path)?,
                 Target::new(path, Existing::from_force(self.force))?,
             )),
             None => None,

@@ -7,7 +7,7 @@ use crate::{
         console::{Console, Layout, Outcome, Trouble},
         draws::Draws,
         field::{self, Field},
-        output::{Existing, Target},
+        output::{self, Existing, Target},
     },
     figures::Drawing,
     report::{json, sweep},
@@ -69,7 +69,7 @@ impl Torque {
         }
         let figure = match &self.out {
             Some(path) => Some((
-                chain::format(path)?,
+                output::format(path)?,
                 Target::new(path, Existing::from_force(self.force))?,
             )),
             None => None,

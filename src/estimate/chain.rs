@@ -273,7 +273,7 @@ impl<'a> Chain<'a> {
     }
 
     /// Clamp force of every bolt in service at nominal, for a joint of these groups, N.
-    fn nominal_forces(&self, case: usize, joint: &Joint) -> Vec<f64> {
+    pub(super) fn nominal_forces(&self, case: usize, joint: &Joint) -> Vec<f64> {
         let at = Realisation::default();
         let by_group: Vec<f64> = joint
             .fasteners

@@ -483,19 +483,29 @@ pub enum MeasuredKind {
         /// The points.
         points: Vec<(f64, f64)>,
     },
-    /// W/K of one bolt: `G = conductance · (F/force)^force_exponent · (T/temperature)^temperature_exponent`.
+    /// W/K of one bolt: `G = conductance · (F/force)^force_exponent · (T/temperature)^temperature_exponent`,
+    /// or the same of its torque.
     ForceLaw {
         /// Conductance at the reference, W/K.
         conductance: f64,
-        /// Reference force, N.
-        force: f64,
-        /// Exponent of the force, 1.
+        /// Reference load.
+        load: LawLoad,
+        /// Exponent of the force or torque, 1.
         force_exponent: f64,
         /// Reference temperature, K.
         temperature: f64,
         /// Exponent of the temperature, 1.
         temperature_exponent: f64,
     },
+}
+
+/// At which load of a bolt a measured law states its conductance.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum LawLoad {
+    /// Clamp force, N.
+    Force(f64),
+    /// Tightening torque, N m.
+    Torque(f64),
 }
 
 /// Losses of clamp force that the file asks for.

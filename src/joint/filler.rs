@@ -5,12 +5,12 @@ mod layer;
 use crate::{
     catalog::{self, FillerRecord},
     joint::{
-        Filler, FillerKind, Measured, MeasuredKind,
+        Filler, FillerKind, LawLoad, Measured, MeasuredKind,
         collector::{Collector, Wording, fault},
         plates::{PlateDraft, two_ways},
         record::Record,
         seats::unknown_plate,
-        sections::{FILLER, MEASURED},
+        sections::{FILLER, MEASURED, MEASURED_LAW},
         tree::{Span, short},
         walk::missing,
     },
@@ -464,7 +464,7 @@ pub(super) fn measured(
         (true, false) => MeasuredKind::Local {
             points: rising(record, "points", collector)?,
         },
-        (false, true) => law(record.record("law")?, temperature, collector)?,
+        (false, true) => law(file, (record.record("law")?, temperature), collector)?,
         (false, false) => {
             let line = MEASURED
                 .field("points")
@@ -479,7 +479,41 @@ pub(super) fn measured(
     }))
 }
 
-fn law(record: &Record, service: Option<f64>, collector: &mut Collector) -> Option<MeasuredKind> {
+fn law(
+    file: &Record,
+    (record, service): (&Record, Option<f64>),
+    collector: &mut Collector,
+) -> Option<MeasuredKind> {
+    let by_torque = match (record.has("force"), record.has("torque")) {
+        (true, true) => {
+            collector.report(two_ways(record, ["force", "torque"]));
+            return None;
+        }
+        (false, false) => {
+            let line = MEASURED_LAW
+                .field("force")
+                .map(crate::joint::fields::Field::line);
+            collector.report(missing(record, "force", &line.unwrap_or_default()));
+            return None;
+        }
+        (_, by_torque) => by_torque,
+    };
+    let exponent_key = if by_torque {
+        "torque_exponent"
+    } else {
+        "force_exponent"
+    };
+    for group in file.records("fastener").iter().filter(|_| by_torque) {
+        collector.require(!group.has("preload"), || {
+            fault(
+                "measured/no-torque",
+                &record.span("torque"),
+                "the law is of torque, and a fastener states its preload",
+            )
+            .expecting("expected a reference force")
+            .help("write `force = \"1 kN\"` in the law, or state the torque of every fastener")
+        });
+    }
     let mut exponent = |key: &str, default: f64, why: &str| match record.number(key) {
         None if record.has(key) => None,
         None => {
@@ -488,7 +522,7 @@ fn law(record: &Record, service: Option<f64>, collector: &mut Collector) -> Opti
         }
         stated => stated,
     };
-    let force_exponent = exponent("force_exponent", 1.0, "not stated: in proportion to force");
+    let force_exponent = exponent(exponent_key, 1.0, "not stated: in proportion to the load");
     let temperature_exponent = exponent(
         "temperature_exponent",
         0.0,
@@ -501,7 +535,11 @@ fn law(record: &Record, service: Option<f64>, collector: &mut Collector) -> Opti
     };
     Some(MeasuredKind::ForceLaw {
         conductance: record.number("conductance")?,
-        force: record.number("force")?,
+        load: if by_torque {
+            LawLoad::Torque(record.number("torque")?)
+        } else {
+            LawLoad::Force(record.number("force")?)
+        },
         force_exponent: force_exponent?,
         temperature: temperature?,
         temperature_exponent: temperature_exponent?,

@@ -262,7 +262,8 @@ fn bound_key(bound: Limit) -> &'static str {
     }
 }
 
-fn cautions(cautions: &[Caution]) -> Value {
+/// Cautions with their codes.
+pub(crate) fn cautions(cautions: &[Caution]) -> Value {
     cautions
         .iter()
         .map(|caution| json!({ "code": caution.code, "text": caution.text }))

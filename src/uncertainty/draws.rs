@@ -49,8 +49,8 @@ pub(super) struct Task<'a> {
     pub(super) options: &'a Options,
     /// Quantiles at the ends of a band.
     pub(super) quantiles: [f64; 2],
-    /// An input that stays at its nominal value.
-    pub(super) known: Option<usize>,
+    /// Inputs that stay at their nominal values.
+    pub(super) known: &'a [usize],
 }
 
 /// Draws whole joints for some answers; the order of the draws, not of the threads, orders the
@@ -77,7 +77,7 @@ pub(super) fn draws_between(
         answers,
         options,
         quantiles,
-        known: None,
+        known: &[],
     }
     .drawn()
 }
@@ -185,11 +185,11 @@ impl Task<'_> {
     }
 }
 
-/// Every input at its quantile, but for one that stays at nominal.
-pub(super) fn placed(inputs: &[Input], point: &[f64], known: Option<usize>) -> Realisation {
+/// Every input at its quantile, but for those that stay at nominal.
+pub(super) fn placed(inputs: &[Input], point: &[f64], known: &[usize]) -> Realisation {
     let mut at = Realisation::default();
     for (index, (input, u)) in inputs.iter().zip(point).enumerate() {
-        if known != Some(index) {
+        if !known.contains(&index) {
             (input.place)(&mut at, *u);
         }
     }

@@ -22,21 +22,23 @@ pub struct Share {
     pub confidence: f64,
 }
 
-/// Indices of one input.
+/// Indices of one group of inputs.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Index {
-    /// Share of the variance that goes if this input alone is known.
+    /// Share of the variance that goes if this group alone is known.
     pub first: Share,
-    /// Share of the variance that is left if all but this input are known.
+    /// Share of the variance that is left if all but this group are known.
     pub total: Share,
 }
 
-/// How many base points of how many inputs, from which seed.
+/// How many base points of which groups of inputs, from which seed.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
-pub struct Bases {
+pub struct Bases<'a> {
     /// Number of inputs.
     pub inputs: usize,
-    /// Number of base points; the function is evaluated (inputs + 2) times as often.
+    /// Inputs that are one matter and move together, by their places among all.
+    pub groups: &'a [Vec<usize>],
+    /// Number of base points; the function is evaluated (groups + 2) times as often.
     pub points: u32,
     /// Seed.
     pub seed: u64,
@@ -49,8 +51,8 @@ struct Sums {
     /// Of both samples: values, and their squares.
     value: f64,
     square: f64,
-    /// Of each input: the sums over points of `S_i` and of `T_i`.
-    inputs: Vec<[f64; 2]>,
+    /// Of each group: the sums over points of `S_i` and of `T_i`.
+    groups: Vec<[f64; 2]>,
 }
 
 /// First-order and total indices of a function of inputs that are even on (0, 1).
@@ -62,7 +64,7 @@ struct Sums {
 /// | symbol | quantity |
 /// |---|---|
 /// | `A`, `B` | two independent samples of n points: halves of the coordinates of one Sobol sequence |
-/// | `A_B^i` | A with the coordinate i of B |
+/// | `A_B^i` | A with the coordinates of group i from B |
 /// | `V` | variance over A and B |
 ///
 /// The interval is Student's over 16 independent scramblings. A constant function has no indices:
@@ -84,24 +86,24 @@ pub fn indices<R, E: Send>(
             })
         })
         .collect::<Result<Vec<Sums>, E>>()?;
-    let mut whole = Sums::of(bases.inputs);
+    let mut whole = Sums::of(bases.groups.len());
     for each in &parts {
         whole.add(each);
     }
-    let share = |input: usize, of: fn(&Sums, usize) -> f64| {
+    let share = |group: usize, of: fn(&Sums, usize) -> f64| {
         let count = SCRAMBLES as f64;
-        let each: Vec<f64> = parts.iter().map(|part| of(part, input)).collect();
+        let each: Vec<f64> = parts.iter().map(|part| of(part, group)).collect();
         let mean = each.iter().sum::<f64>() / count;
         let squares: f64 = each.iter().map(|each| (each - mean).powi(2)).sum();
         Share {
-            value: of(&whole, input),
+            value: of(&whole, group),
             confidence: STUDENT * (squares / (count - 1.0) / count).sqrt(),
         }
     };
-    Ok((0..bases.inputs)
-        .map(|input| Index {
-            first: share(input, Sums::first),
-            total: share(input, Sums::total),
+    Ok((0..bases.groups.len())
+        .map(|group| Index {
+            first: share(group, Sums::first),
+            total: share(group, Sums::total),
         })
         .collect())
 }
@@ -121,26 +123,29 @@ fn part<R, E: Send>(
         .map_init(room, |room, start| {
             let mut walk = sobol.walk(*start as u32);
             let mut both = vec![0.0; 2 * bases.inputs];
-            let mut sums = Sums::of(bases.inputs);
+            let mut mixed = vec![0.0; bases.inputs];
+            let mut sums = Sums::of(bases.groups.len());
             for _ in 0..TOGETHER.min(size - start) {
                 walk.next_into(&mut both);
-                let (a, b) = both.split_at_mut(bases.inputs);
+                let (a, b) = both.split_at(bases.inputs);
                 let [at_a, at_b] = [function(a, room)?, function(b, room)?];
                 sums.points += 1.0;
                 sums.value += at_a + at_b;
                 sums.square += at_a * at_a + at_b * at_b;
-                for (input, own) in sums.inputs.iter_mut().enumerate() {
-                    let kept = std::mem::replace(&mut a[input], b[input]);
-                    let mixed = function(a, room)?;
-                    a[input] = kept;
-                    own[0] += at_b * (mixed - at_a);
-                    own[1] += (at_a - mixed).powi(2);
+                for (group, own) in bases.groups.iter().zip(&mut sums.groups) {
+                    mixed.copy_from_slice(a);
+                    for input in group {
+                        mixed[*input] = b[*input];
+                    }
+                    let at_mixed = function(&mixed, room)?;
+                    own[0] += at_b * (at_mixed - at_a);
+                    own[1] += (at_a - at_mixed).powi(2);
                 }
             }
             Ok(sums)
         })
         .collect::<Result<Vec<Sums>, E>>()?;
-    let mut whole = Sums::of(bases.inputs);
+    let mut whole = Sums::of(bases.groups.len());
     for sums in &done {
         whole.add(sums);
     }
@@ -148,12 +153,12 @@ fn part<R, E: Send>(
 }
 
 impl Sums {
-    fn of(inputs: usize) -> Self {
+    fn of(groups: usize) -> Self {
         Self {
             points: 0.0,
             value: 0.0,
             square: 0.0,
-            inputs: vec![[0.0; 2]; inputs],
+            groups: vec![[0.0; 2]; groups],
         }
     }
 
@@ -161,7 +166,7 @@ impl Sums {
         self.points += other.points;
         self.value += other.value;
         self.square += other.square;
-        for (sums, more) in self.inputs.iter_mut().zip(&other.inputs) {
+        for (sums, more) in self.groups.iter_mut().zip(&other.groups) {
             sums[0] += more[0];
             sums[1] += more[1];
         }
@@ -172,12 +177,12 @@ impl Sums {
         self.square / (2.0 * self.points) - mean * mean
     }
 
-    fn first(&self, input: usize) -> f64 {
-        self.inputs[input][0] / self.points / self.variance()
+    fn first(&self, group: usize) -> f64 {
+        self.groups[group][0] / self.points / self.variance()
     }
 
-    fn total(&self, input: usize) -> f64 {
-        self.inputs[input][1] / (2.0 * self.points) / self.variance()
+    fn total(&self, group: usize) -> f64 {
+        self.groups[group][1] / (2.0 * self.points) / self.variance()
     }
 }
 
@@ -186,6 +191,10 @@ mod tests {
     use std::{convert::Infallible, f64::consts::PI};
 
     use super::*;
+
+    fn alone(inputs: usize) -> Vec<Vec<usize>> {
+        (0..inputs).map(|input| vec![input]).collect()
+    }
 
     fn found(bases: Bases, function: impl Fn(&[f64]) -> f64 + Sync) -> Vec<Index> {
         let Ok(indices) = indices(
@@ -207,9 +216,11 @@ mod tests {
         function: impl Fn(&[f64]) -> f64 + Sync,
     ) {
         let (mut held, mut all) = (0, 0);
+        let groups = alone(wanted.len());
         for seed in 0..40 {
             let bases = Bases {
                 inputs: wanted.len(),
+                groups: &groups,
                 points,
                 seed,
             };
@@ -283,6 +294,7 @@ mod tests {
         hold(&[[0.36, 0.36], [0.64, 0.64]], (10_007, 0.02), sum);
         let bases = Bases {
             inputs: 3,
+            groups: &alone(3),
             points: 10_007,
             seed: 3,
         };
@@ -290,10 +302,31 @@ mod tests {
         assert!(idle.total.value.abs() < f64::EPSILON, "{idle:?}");
     }
 
+    // Linear: the shares of a group are the sums of those of its members, here 9 + 16 and 144 of 169.
+    #[test]
+    fn a_group_has_the_shares_of_its_members() {
+        let groups = [vec![0, 2], vec![1]];
+        let bases = Bases {
+            inputs: 3,
+            groups: &groups,
+            points: 16_384,
+            seed: 5,
+        };
+        let indices = found(bases, |u| 3.0 * u[0] + 12.0 * u[1] + 4.0 * u[2]);
+        for (index, wanted) in indices.iter().zip([25.0 / 169.0, 144.0 / 169.0]) {
+            for share in [index.first, index.total] {
+                assert!(share.confidence < 0.02, "{share:?}");
+                let off = (share.value - wanted).abs();
+                assert!(off <= 3.0 * share.confidence, "{share:?} {wanted}");
+            }
+        }
+    }
+
     #[test]
     fn a_constant_has_no_indices() {
         let bases = Bases {
             inputs: 2,
+            groups: &alone(2),
             points: 256,
             seed: 1,
         };

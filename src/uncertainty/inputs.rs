@@ -279,10 +279,13 @@ fn stated(what: What, (index, count): (usize, usize)) -> Input {
     }
 }
 
+/// Name of the input that stands for the error of the grid.
+pub const NUMERICAL: &str = "numerical error";
+
 /// What the grid may err, either way.
 fn numerical(error: f64) -> Input {
     Input {
-        name: "numerical error",
+        name: NUMERICAL,
         remedy: "solve finer: `--resolution fine`",
         place: Arc::new(move |at, u| at.numerical = error * even(u)),
         reading: Arc::new(|at| at.numerical),

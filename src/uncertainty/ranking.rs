@@ -152,23 +152,26 @@ pub fn ranking(chain: &Chain, options: &RankingOptions) -> Result<Ranking, Failu
         Target::Rise => joint.service.heat.unwrap_or(f64::NAN),
         _ => 1.0,
     };
+    let matters = matters(&inputs);
     let asked = Asked {
         plan: &plan,
         inputs: &inputs,
+        matters: &matters,
         answer: options.target.answer(),
         heat,
         draws: options.draws,
     };
     let nominal = asked.value(&Realisation::default(), &mut plan.workspace())?;
     let (scale, indices) = asked.indices()?;
-    let mut ranked = Vec::with_capacity(inputs.len());
-    for (place, (input, index)) in inputs.iter().zip(indices).enumerate() {
+    let mut ranked = Vec::with_capacity(matters.len());
+    for (matter, index) in matters.iter().zip(indices) {
+        let input = &inputs[matter[0]];
         ranked.push(Ranked {
             input: input.name,
             remedy: remedy(joint, input),
             index,
-            alone: asked.alone(place)?,
-            known: asked.band(nominal, Some(place))?,
+            alone: asked.alone(matter)?,
+            known: asked.band(nominal, matter)?,
         });
     }
     let first: f64 = ranked.iter().map(|each| each.index.first.value).sum();
@@ -184,7 +187,7 @@ pub fn ranking(chain: &Chain, options: &RankingOptions) -> Result<Ranking, Failu
         target: options.target,
         draws: options.draws.draws,
         seed: options.draws.seed,
-        band: asked.band(nominal, None)?,
+        band: asked.band(nominal, &[])?,
         draw_error: chain.draw_error(case),
         interaction: 1.0 - first,
         scale,
@@ -192,10 +195,24 @@ pub fn ranking(chain: &Chain, options: &RankingOptions) -> Result<Ranking, Failu
     })
 }
 
+/// Inputs of one name as one matter, by their places, in the order of the first of each.
+fn matters(inputs: &[Input]) -> Vec<Vec<usize>> {
+    let mut found: Vec<Vec<usize>> = Vec::new();
+    for (place, input) in inputs.iter().enumerate() {
+        let same = |matter: &&mut Vec<usize>| inputs[matter[0]].name == input.name;
+        match found.iter_mut().find(same) {
+            Some(matter) => matter.push(place),
+            None => found.push(vec![place]),
+        }
+    }
+    found
+}
+
 /// The answer that is looked into, with what it takes to draw it.
 struct Asked<'a> {
     plan: &'a DrawPlan<'a>,
     inputs: &'a [Input],
+    matters: &'a [Vec<usize>],
     answer: Answer,
     heat: f64,
     draws: Options,
@@ -210,6 +227,7 @@ impl Asked<'_> {
     fn indices(&self) -> Result<(Scale, Vec<Index>), Failure> {
         let bases = Bases {
             inputs: self.inputs.len(),
+            groups: self.matters,
             points: self.draws.draws,
             seed: self.draws.seed,
         };
@@ -218,7 +236,7 @@ impl Asked<'_> {
                 &bases,
                 || self.plan.workspace(),
                 |point, workspace| {
-                    let at = placed(self.inputs, point, None);
+                    let at = placed(self.inputs, point, &[]);
                     Ok(scale.of(self.value(&at, workspace)?))
                 },
             )
@@ -230,20 +248,22 @@ impl Asked<'_> {
         Ok((Scale::Itself, of(Scale::Itself)?))
     }
 
-    /// The answer with one input alone at the ends of its band.
-    fn alone(&self, input: usize) -> Result<[f64; 2], Failure> {
+    /// The answer with one matter alone at the ends of its band.
+    fn alone(&self, matter: &[usize]) -> Result<[f64; 2], Failure> {
         let mut workspace = self.plan.workspace();
         let mut at_quantile = |quantile: f64| {
             let mut at = Realisation::default();
-            (self.inputs[input].place)(&mut at, quantile);
+            for input in matter {
+                (self.inputs[*input].place)(&mut at, quantile);
+            }
             self.value(&at, &mut workspace)
         };
         let [low, high] = QUANTILES;
         Ok([at_quantile(low)?, at_quantile(high)?])
     }
 
-    /// The band around the nominal answer, with one input known to be nominal where one is named.
-    fn band(&self, nominal: f64, known: Option<usize>) -> Result<Band, Failure> {
+    /// The band around the nominal answer, with some inputs known to be nominal.
+    fn band(&self, nominal: f64, known: &[usize]) -> Result<Band, Failure> {
         let task = Task {
             plan: self.plan,
             inputs: self.inputs,

@@ -35,7 +35,7 @@ pub fn verification(
     let mut errors = Vec::new();
     for _ in 0..options.draws {
         walk.next_into(&mut point);
-        let at = placed(&inputs, &point, None);
+        let at = placed(&inputs, &point, &[]);
         if let Some([told, solved]) = chain.draw_beside(case, &at)? {
             errors.push((told / solved - 1.0).abs());
         }

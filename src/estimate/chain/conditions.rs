@@ -10,7 +10,7 @@ use crate::{
         forces::Group,
         surfaces::{Conducting, Facets},
     },
-    joint::MeasuredKind,
+    joint::{LawLoad, MeasuredKind, Tightening},
     resistance::Load,
 };
 
@@ -97,6 +97,33 @@ pub(super) struct Outlook<'a> {
     facets: Vec<Facets>,
     conducting: Vec<Conducting>,
     shanks: Vec<f64>,
+    force_law: Option<ForceLaw>,
+}
+
+/// A measured law of the conductance of a bolt over its force, at the temperature of a case.
+#[derive(Clone, Debug)]
+struct ForceLaw {
+    /// Conductance of a bolt under its reference force, W/K.
+    conductance: f64,
+    exponent: f64,
+    /// Reference force of every bolt, N.
+    references: Vec<f64>,
+}
+
+impl ForceLaw {
+    /// As a local conductance over pressure, W/(m² K Pa).
+    ///
+    /// ```text
+    /// h = p Σ G(F)/Σ F,   G = G₀ (F/F₀)ⁿ (T/T₀)ᵐ   so that ∫ h dA = Σ G, since ∫ p dA = Σ F
+    /// ```
+    fn per_pascal(&self, forces: &[f64]) -> f64 {
+        let bolts = forces.iter().zip(&self.references);
+        let whole: f64 = bolts
+            .map(|(force, reference)| self.conductance * (force / reference).powf(self.exponent))
+            .sum();
+        let carried: f64 = forces.iter().sum();
+        if carried > 0.0 { whole / carried } else { 0.0 }
+    }
 }
 
 impl<'a> Outlook<'a> {
@@ -121,6 +148,7 @@ impl<'a> Outlook<'a> {
             facets,
             conducting,
             shanks: chain.shanks(warmth.bolts())?,
+            force_law: chain.force_law(case),
         })
     }
 
@@ -166,7 +194,7 @@ impl<'a> Outlook<'a> {
         let joint = chain.joint();
         let forces = &mut conditions.forces;
         chain.put_service_forces((self.case, at), forces);
-        let law = chain.force_law(forces, conditions.temperature);
+        let law = self.force_law.as_ref().map(|law| law.per_pascal(forces));
         conditions.faces.clear();
         conditions.faces.extend(self.facets.iter().map(|facets| {
             let interface = facets.at(joint, at);
@@ -242,15 +270,11 @@ impl Chain<'_> {
         }
     }
 
-    /// Measured W/K per bolt as a local conductance over pressure, W/(m² K Pa).
-    ///
-    /// ```text
-    /// h = p Σ G(F)/Σ F,   G = G₀ (F/F₀)ⁿ (T/T₀)ᵐ   so that ∫ h dA = Σ G, since ∫ p dA = Σ F
-    /// ```
-    fn force_law(&self, forces: &[f64], temperature: f64) -> Option<f64> {
+    /// Measured W/K per bolt at the temperature of a case; none where no such law is stated.
+    fn force_law(&self, case: usize) -> Option<ForceLaw> {
         let MeasuredKind::ForceLaw {
             conductance,
-            force,
+            load,
             force_exponent,
             temperature: reference,
             temperature_exponent,
@@ -258,13 +282,32 @@ impl Chain<'_> {
         else {
             return None;
         };
-        let warmth = (temperature / reference).powf(temperature_exponent);
-        let whole: f64 = forces
+        let temperature = self.joint.service.cases[case].temperature;
+        Some(ForceLaw {
+            conductance: conductance * (temperature / reference).powf(temperature_exponent),
+            exponent: force_exponent,
+            references: match load {
+                LawLoad::Force(force) => vec![force; self.group_of.len()],
+                LawLoad::Torque(torque) => self.forces_at_torque(case, torque),
+            },
+        })
+    }
+
+    /// Force in service of every bolt that a torque would give at nominal friction, N.
+    fn forces_at_torque(&self, case: usize, torque: f64) -> Vec<f64> {
+        let nominal = self.nominal_forces(case, self.joint());
+        let stated = self.group_of.iter().map(|group| {
+            match &self.joint().fasteners[*group].tightening {
+                Tightening::Torque(stated) => stated.torque,
+                // The reader refuses such a law beside a preload.
+                Tightening::Preload(_) => torque,
+            }
+        });
+        nominal
             .iter()
-            .map(|each| conductance * (each / force).powf(force_exponent) * warmth)
-            .sum();
-        let carried: f64 = forces.iter().sum();
-        Some(if carried > 0.0 { whole / carried } else { 0.0 })
+            .zip(stated)
+            .map(|(force, stated)| force * torque / stated)
+            .collect()
     }
 
     /// Conductance of each bolt's shank from head to nut, W/K.

@@ -139,7 +139,7 @@ pub static MEASURED: Section = Section {
 /// `law` of `[measured]`.
 pub static MEASURED_LAW: Section = Section {
     name: "law",
-    meaning: "G = conductance (F / force)^force_exponent (T / temperature)^temperature_exponent",
+    meaning: "G = conductance (F / force)^force_exponent (T / temperature)^temperature_exponent, or (M / torque)^torque_exponent",
     shorthand: None,
     fields: &[
         field(
@@ -156,8 +156,22 @@ pub static MEASURED_LAW: Section = Section {
             "reference force",
             "\"1 kN\"",
         )
-        .within(1e-3, 1e8)
-        .required(),
+        .within(1e-3, 1e8),
+        field(
+            "torque",
+            Kind::Quantity(Quantity::Torque),
+            "reference torque of a bolt, in place of the force",
+            "\"2 N·m\"",
+        )
+        .within(1e-6, 1e6),
+        field(
+            "torque_exponent",
+            Kind::Number,
+            "exponent of the torque",
+            "1.0",
+        )
+        .within(-2.0, 5.0)
+        .default("1"),
         field(
             "force_exponent",
             Kind::Number,
