@@ -6,9 +6,12 @@ mod check;
 mod console;
 mod draw;
 mod drawings;
+mod draws;
+mod drivers;
 mod estimate;
 mod explain;
 mod field;
+mod fit;
 mod hidden;
 mod input;
 mod list;
@@ -58,8 +61,10 @@ enum Command {
     Check(check::Check),
     Estimate(estimate::Estimate),
     Torque(torque::Torque),
+    Drivers(drivers::Drivers),
     Draw(draw::Draw),
     Arrange(arrange::Arrange),
+    Fit(Box<fit::Fit>),
     List(list::List),
     Explain(explain::Explain),
     #[command(hide = true)]
@@ -111,8 +116,10 @@ impl Command {
             Self::Check(command) => command.run(console),
             Self::Estimate(command) => command.run(console),
             Self::Torque(command) => command.run(console),
+            Self::Drivers(command) => command.run(console),
             Self::Draw(command) => command.run(console),
             Self::Arrange(command) => command.run(console),
+            Self::Fit(command) => command.run(console),
             Self::List(command) => command.run(console),
             Self::Explain(command) => command.run(console),
             Self::Completions(command) => command.run(console),

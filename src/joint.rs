@@ -23,6 +23,8 @@ mod heating;
 mod inserts;
 mod isolating;
 mod lands;
+mod limits;
+mod loads;
 mod maps;
 mod materials;
 mod medium;
@@ -42,7 +44,9 @@ mod stacking;
 mod syntax;
 mod tightening;
 mod tree;
+mod uncertainty;
 mod walk;
+mod zones;
 
 use toml::de::DeTable;
 
@@ -235,13 +239,19 @@ fn assembled(file: &Record, tables: &mut Tables<'_>, collector: &mut Collector) 
         fasteners::read_alone(file, collector);
         return None;
     };
+    limits::plates(&plates, collector);
     let source = heating::read(&plates[0], collector);
     let sink = cooling::read(&plates[plates.len() - 1], collector);
     sandwich::cooled(&plates[plates.len() - 1], sink.as_ref(), collector);
     let contact = contact::read(file, &plates, collector);
     let fasteners = fasteners::read(file, (&plates, &own), collector);
+    if let Some(fasteners) = &fasteners {
+        limits::seats(file, fasteners, collector);
+    }
     let losses = contact::losses(file, collector);
     let arrange = arrange::read(file, collector);
+    let bolts_scatter = uncertainty::bolts(file, collector);
+    let names: Vec<String> = plates.iter().map(|plate| plate.name.clone()).collect();
     let plates: Option<Vec<Plate>> = plates
         .into_iter()
         .map(plates::PlateDraft::finished)
@@ -258,9 +268,13 @@ fn assembled(file: &Record, tables: &mut Tables<'_>, collector: &mut Collector) 
         measured: measured?,
         losses: losses?,
         arrange: arrange?,
+        uncertain: uncertainty::stated(file, &names),
+        bolts_scatter: bolts_scatter?,
         assumptions: Vec::new(),
     };
     cold::check(&joint, file, collector);
+    loads::check(&joint, file, collector);
+    zones::check(&joint, file, collector);
     Some(joint)
 }
 

@@ -3,6 +3,8 @@
 pub mod arrange;
 pub mod card;
 pub mod catalogue;
+pub mod drivers;
+pub mod fit;
 pub mod json;
 pub mod listing;
 pub mod media;
@@ -10,3 +12,4 @@ pub mod number;
 pub mod sweep;
 pub mod table;
 pub mod text;
+mod window;

@@ -6,8 +6,7 @@ use crate::{
         check,
         console::{Console, Layout as Lines, Outcome, Trouble},
         drawings, field, input,
-        output::{Existing, Target},
-        torque::format,
+        output::{self, Existing, Target},
     },
     figures::{ArrangePlot, Drawing, Format},
     joint::{self, Joint},
@@ -129,7 +128,7 @@ impl Arrange {
     /// Searches, prints the best, and tells by the exit code whether it was interrupted.
     pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
         let figure = match &self.draw {
-            Some(path) => Some((format(path)?, Target::new(path, self.existing())?)),
+            Some(path) => Some((output::format(path)?, Target::new(path, self.existing())?)),
             None => None,
         };
         self.check_folder()?;

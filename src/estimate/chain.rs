@@ -2,6 +2,7 @@
 
 mod conditions;
 mod cone;
+mod draw;
 mod elastic;
 mod form;
 mod geometry;
@@ -9,21 +10,27 @@ mod levels;
 mod temperatures;
 mod warmth;
 
+pub use draw::{DrawPlan, Drawn, Workspace};
 pub(crate) use levels::LARGE_ERROR;
 pub(in crate::estimate) use warmth::Warmth;
 
-use std::borrow::Cow;
+use std::{
+    borrow::Cow,
+    sync::{Arc, OnceLock},
+};
 
 pub use conditions::Conditions;
 use cone::ConeModel;
 use elastic::ElasticModel;
+use form::with_error;
 
 use crate::{
     diagnostic::Caution,
     estimate::{
         Band, BoltResult, Choice, Failure, Fineness, InterfaceResult, PressureResult, Realisation,
-        RingRow, Strength, Watch,
+        RingRow, Side, Strength, TorqueLimit, Watch,
         forces::{self, Group},
+        torques::SEPARATION,
     },
     joint::{Bounds, Fastener, Joint, Medium, Tightening},
     pressure::Cone,
@@ -38,6 +45,8 @@ pub struct Chain<'a> {
     /// Group of each bolt.
     group_of: Vec<usize>,
     model: Model,
+    /// Error of the discretisation, where it has been worked out; shared with other torques and media.
+    error: Arc<OnceLock<f64>>,
 }
 
 /// What stands for the pressure between the faces and for the heat in the plates.
@@ -106,6 +115,7 @@ impl<'a> Chain<'a> {
             .collect();
         let mut chain = Self {
             joint: Cow::Borrowed(joint),
+            error: Arc::default(),
             groups,
             group_of,
             model: match choice {
@@ -140,28 +150,48 @@ impl<'a> Chain<'a> {
     /// Checked: `force_ends_are_those_of_the_band`.
     pub fn at_force_end(&self, case: usize, end: ForceEnd) -> Result<Chain<'static>, Failure> {
         let mut joint = self.joint().clone();
-        // The stated ends hold every loss already.
+        // The ends hold every loss and every load already.
         joint.losses = None;
-        let forces: Vec<f64> = self
-            .joint
-            .fasteners
-            .iter()
-            .zip(&self.groups)
-            .map(|(fastener, group)| {
-                let band = group.service_band(self.joint(), fastener, case);
-                let service = match end {
-                    ForceEnd::Least => band.low,
-                    ForceEnd::Largest => band.high,
-                };
-                // What the temperature adds is added again in the new joint.
-                let gain = group.losses(&joint, case, 0.0).temperature;
-                service.unwrap_or(band.nominal) - gain
-            })
-            .collect();
-        for (fastener, force) in joint.fasteners.iter_mut().zip(forces) {
-            fastener.tightening = Tightening::Preload(Bounds::exact(force));
+        for (fastener, group) in joint.fasteners.iter_mut().zip(&self.groups) {
+            let band = group.service_band(self.joint(), fastener, case);
+            let force = match end {
+                ForceEnd::Least => band.low,
+                ForceEnd::Largest => band.high,
+            };
+            fastener.tightening = Tightening::Preload(Bounds::exact(force.unwrap_or(band.nominal)));
+            fastener.axial_load = None;
         }
-        self.with(joint)
+        let mut chain = Chain {
+            joint: Cow::Owned(joint),
+            groups: self.groups.iter().map(Group::held).collect(),
+            group_of: self.group_of.clone(),
+            model: self.model.clone(),
+            error: self.error.clone(),
+        };
+        chain.model = chain.levelled()?;
+        Ok(chain)
+    }
+
+    /// The same joint with a group tightened or graded otherwise; plates, cells and grid are shared, so
+    /// that places, holes and seats must be the same.
+    pub(crate) fn with_fastener(
+        &self,
+        group: usize,
+        fastener: Fastener,
+    ) -> Result<Chain<'static>, Failure> {
+        let mut joint = self.joint().clone();
+        joint.fasteners[group] = fastener;
+        let prepared = Group::new(&joint, &joint.fasteners[group])?;
+        let mut chain = Chain {
+            joint: Cow::Owned(joint),
+            groups: self.groups.clone(),
+            group_of: self.group_of.clone(),
+            model: self.model.clone(),
+            error: self.error.clone(),
+        };
+        chain.groups[group] = prepared;
+        chain.model = chain.levelled()?;
+        Ok(chain)
     }
 
     /// The same joint in vacuum; plates, cells and grid are shared.
@@ -183,6 +213,7 @@ impl<'a> Chain<'a> {
             groups: self.groups.clone(),
             group_of: self.group_of.clone(),
             model: self.model.clone(),
+            error: self.error.clone(),
         };
         chain.model = chain.levelled()?;
         Ok(chain)
@@ -224,6 +255,7 @@ impl<'a> Chain<'a> {
             Model::Cone(model) => model.path(case, &conditions, at),
             Model::Elastic(model) => model.path(self, case, (&conditions, at))?,
         };
+        let path = with_error(path, at.numerical);
         self.check(case, &path)?;
         Ok(State { conditions, path })
     }
@@ -278,13 +310,13 @@ impl<'a> Chain<'a> {
     }
 
     /// Clamp force of every bolt in service at nominal, for a joint of these groups, N.
-    fn nominal_forces(&self, case: usize, joint: &Joint) -> Vec<f64> {
+    pub(super) fn nominal_forces(&self, case: usize, joint: &Joint) -> Vec<f64> {
         let at = Realisation::default();
         let by_group: Vec<f64> = joint
             .fasteners
             .iter()
             .zip(&self.groups)
-            .map(|(fastener, group)| group.service_force(joint, fastener, (case, &at)))
+            .map(|(fastener, group)| group.service_force((joint, fastener), None, (case, &at)))
             .collect();
         self.group_of.iter().map(|group| by_group[*group]).collect()
     }
@@ -337,17 +369,23 @@ impl<'a> Chain<'a> {
 
     /// Every bolt of a case, at the nominal state.
     pub fn bolts(&self, case: usize, state: &State) -> Vec<BoltResult> {
+        let strengths: Vec<Strength> = self
+            .groups()
+            .map(|(fastener, group)| group.strength(self.joint(), fastener))
+            .collect();
         self.joint
             .bolts()
             .enumerate()
             .map(|(bolt, (fastener, at))| {
                 let group = &self.groups[self.group_of[bolt]];
-                let strength = group.strength(fastener);
+                let strength = &strengths[self.group_of[bolt]];
                 BoltResult {
                     at,
                     force: forces::assembly_band(fastener),
                     force_in_service: group.service_band(self.joint(), fastener, case),
+                    axial: group.shared(self.joint(), fastener, case),
                     strength_use: strength.equivalent,
+                    use_in_service: strength.in_service,
                     largest_torque: strength.largest_torque.map(|(torque, _)| torque),
                     contact_radius: match &self.model {
                         Model::Cone(model) => model.cones()[bolt].contact_radius,
@@ -391,9 +429,14 @@ impl<'a> Chain<'a> {
         }
     }
 
-    /// How the faces meet at a point in joint coordinates, first case at nominal; none off the
-    /// faying faces or in a hole.
+    /// How the faces of the first interface meet at a point in joint coordinates, first case at nominal;
+    /// none off the faying faces or in a hole.
     pub fn met_at(&self, point: [f64; 2], state: &State) -> Option<Meeting> {
+        self.met_in(0, point, state)
+    }
+
+    /// The same in any interface, counted from the warm side; the cone has one.
+    pub fn met_in(&self, interface: usize, point: [f64; 2], state: &State) -> Option<Meeting> {
         match &self.model {
             Model::Cone(model) => {
                 let pressure = model.cells().pressure_at(point, &state.conditions.forces)?;
@@ -402,15 +445,20 @@ impl<'a> Chain<'a> {
                     gap: None,
                 })
             }
-            Model::Elastic(model) => model.met_at(self, point),
+            Model::Elastic(model) => model.met_at(self, (point, interface)),
         }
     }
 
-    /// The rings around one bolt, from the hole outward.
+    /// The rings around one bolt in the first interface, from the hole outward.
     pub fn rings(&self, bolt: usize, state: &State) -> Vec<RingRow> {
+        self.rings_in(0, bolt, state)
+    }
+
+    /// The same in any interface, counted from the warm side; the cone has one.
+    pub fn rings_in(&self, interface: usize, bolt: usize, state: &State) -> Vec<RingRow> {
         match &self.model {
             Model::Cone(model) => model.cells().rings(&state.conditions.load(), bolt),
-            Model::Elastic(model) => model.rings(self, bolt),
+            Model::Elastic(model) => model.rings(self, (bolt, interface)),
         }
     }
 
@@ -429,7 +477,27 @@ impl<'a> Chain<'a> {
 
     /// What the bolts of a group bear.
     pub fn strength(&self, group: usize) -> Strength {
-        self.groups[group].strength(&self.joint.fasteners[group])
+        self.groups[group].strength(&self.joint, &self.joint.fasteners[group])
+    }
+
+    /// Every limit of strength and separation on the torque of a group, torque rising.
+    pub fn torque_limits(&self, group: usize) -> Vec<TorqueLimit> {
+        let (prepared, fastener) = (&self.groups[group], &self.joint.fasteners[group]);
+        let least = prepared.least_torque(&self.joint, fastener);
+        let least = least.map(|torque| TorqueLimit {
+            name: SEPARATION,
+            torque,
+            side: Side::Least,
+        });
+        let most = prepared.most_torques(&self.joint, fastener);
+        let most = most.into_iter().map(|(name, torque)| TorqueLimit {
+            name,
+            torque,
+            side: Side::Most,
+        });
+        let mut limits: Vec<TorqueLimit> = least.into_iter().chain(most).collect();
+        limits.sort_by(|one, other| one.torque.total_cmp(&other.torque));
+        limits
     }
 
     /// Force at assembly of a group.
@@ -470,10 +538,32 @@ impl<'a> Chain<'a> {
     /// Error of the discretisation at the nominal state of the first case, relative to source to
     /// sink.
     pub fn discretisation_error(&self, state: &State) -> Result<f64, Failure> {
-        match &self.model {
+        if let Some(error) = self.known_error() {
+            return Ok(error);
+        }
+        let error = match &self.model {
             Model::Cone(model) => model.discretisation_error(self, state),
             Model::Elastic(model) => model.discretisation_error(self),
+        }?;
+        Ok(*self.error.get_or_init(|| error))
+    }
+
+    /// The same where this chain, or the one it comes from, has worked it out.
+    pub(crate) fn known_error(&self) -> Option<f64> {
+        self.error.get().copied()
+    }
+
+    /// Bolts whose forces move together in the draws: every group, or every bolt for itself.
+    pub(super) fn force_classes(&self) -> Vec<Vec<usize>> {
+        let bolts = 0..self.group_of.len();
+        if self.joint.bolts_scatter.own > 0.0 {
+            return bolts.map(|bolt| vec![bolt]).collect();
         }
+        let mut classes = vec![Vec::new(); self.groups.len()];
+        for bolt in bolts {
+            classes[self.group_of[bolt]].push(bolt);
+        }
+        classes
     }
 
     /// Share of what the gas takes off the joint's resistance: 0 in vacuum, near 1 where the gas
