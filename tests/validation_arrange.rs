@@ -269,7 +269,8 @@ fn random_layouts(constraints: &Constraints, size: [f64; 2], count: usize) -> Ve
     layouts
 }
 
-/// The screening ranks random layouts as the elastic field does: 20 here, 200 in the bench.
+/// The screening ranks random layouts as the elastic field does; `cargo bench --bench arrange -- ranks 200`
+/// takes more than the 20 here.
 #[test]
 fn the_screening_ranks_layouts_as_the_elastic_field_does() {
     let size = [0.1, 0.06];
