@@ -25,6 +25,7 @@ mod lands;
 mod maps;
 mod materials;
 mod medium;
+mod missing;
 mod overrides;
 mod patches;
 mod patterns;
@@ -59,6 +60,7 @@ use crate::{
 pub use checked::*;
 pub use finishes::slope_from_roughness;
 pub use maps::{Files, LONGEST_TABLE};
+pub use missing::NotLeftOut;
 pub use radiation::{RadiatingBack, STEFAN_BOLTZMANN, radiative_film};
 pub use schema::schema;
 
@@ -255,6 +257,7 @@ fn assembled(file: &Record, tables: &mut Tables<'_>, collector: &mut Collector) 
         fillers: fillers?,
         measured: measured?,
         losses: losses?,
+        missing: Vec::new(),
         assumptions: Vec::new(),
     };
     cold::check(&joint, file, collector);

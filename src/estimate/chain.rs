@@ -247,7 +247,21 @@ impl<'a> Chain<'a> {
             .zip(&self.groups)
             .map(|(fastener, group)| group.service_force(joint, fastener, (case, &at)))
             .collect();
-        self.group_of.iter().map(|group| by_group[*group]).collect()
+        self.of_bolts(&by_group)
+    }
+
+    /// Values of the groups bolt by bolt; nothing where a bolt is missing.
+    pub(super) fn of_bolts(&self, by_group: &[f64]) -> Vec<f64> {
+        let mut found: Vec<f64> = self.group_of.iter().map(|group| by_group[*group]).collect();
+        self.vacate(&mut found);
+        found
+    }
+
+    /// Leaves nothing of the values of missing bolts.
+    pub(super) fn vacate(&self, values: &mut [f64]) {
+        for bolt in &self.joint.missing {
+            values[*bolt] = 0.0;
+        }
     }
 
     /// A failure of the networks in one case.
@@ -260,17 +274,25 @@ impl<'a> Chain<'a> {
 
     /// Refuses a case in which a bolt no longer clamps.
     pub(super) fn refuse_open(&self, case: usize, forces: &[f64]) -> Result<(), Failure> {
-        if forces.iter().any(|force| *force <= 0.0) {
+        if self.open_bolts(forces) > 0 {
             return Err(self.open(case, forces));
         }
         Ok(())
     }
 
+    /// Number of bolts that are there and no longer clamp.
+    fn open_bolts(&self, forces: &[f64]) -> usize {
+        let bolts = forces.iter().enumerate();
+        bolts
+            .filter(|(bolt, force)| **force <= 0.0 && !self.joint.is_missing(*bolt))
+            .count()
+    }
+
     /// The failure of a case in which bolts no longer clamp.
     pub(super) fn open(&self, case: usize, forces: &[f64]) -> Failure {
         Failure::Open {
-            bolts: forces.iter().filter(|force| **force <= 0.0).count(),
-            of: forces.len(),
+            bolts: self.open_bolts(forces),
+            of: self.joint().clamping(),
             case: self.joint().service.cases[case].name,
         }
     }
@@ -285,10 +307,8 @@ impl<'a> Chain<'a> {
             .map(|(fastener, group)| group.service_band(self.joint(), fastener, case))
             .collect();
         let ends = |of: &dyn Fn(&Band) -> f64| -> Vec<f64> {
-            self.group_of
-                .iter()
-                .map(|group| of(&bands[*group]))
-                .collect()
+            let by_group: Vec<f64> = bands.iter().map(of).collect();
+            self.of_bolts(&by_group)
         };
         [
             ends(&|band| band.low.unwrap_or(band.nominal).min(band.nominal)),
@@ -302,16 +322,20 @@ impl<'a> Chain<'a> {
             .bolts()
             .enumerate()
             .map(|(bolt, (fastener, at))| {
+                if self.joint.is_missing(bolt) {
+                    return BoltResult::missing(at);
+                }
                 let group = &self.groups[self.group_of[bolt]];
                 let strength = group.strength(fastener);
                 BoltResult {
                     at,
+                    missing: false,
                     force: forces::assembly_band(fastener),
                     force_in_service: group.service_band(self.joint(), fastener, case),
                     strength_use: strength.equivalent,
                     largest_torque: strength.largest_torque.map(|(torque, _)| torque),
                     contact_radius: match &self.model {
-                        Model::Cone(model) => model.cones()[bolt].contact_radius,
+                        Model::Cone(model) => model.contact_radius(bolt),
                         Model::Elastic(model) => model.contact_radius(self, (case, bolt)),
                     },
                     contact_conductance: state.path.contact_per_bolt[bolt],
@@ -357,7 +381,8 @@ impl<'a> Chain<'a> {
     pub fn met_at(&self, point: [f64; 2], state: &State) -> Option<Meeting> {
         match &self.model {
             Model::Cone(model) => {
-                let pressure = model.cells().pressure_at(point, &state.conditions.forces)?;
+                let forces = model.clamping(&state.conditions.forces);
+                let pressure = model.cells().pressure_at(point, &forces)?;
                 Some(Meeting {
                     pressure,
                     gap: None,
@@ -370,7 +395,7 @@ impl<'a> Chain<'a> {
     /// The rings around one bolt, from the hole outward.
     pub fn rings(&self, bolt: usize, state: &State) -> Vec<RingRow> {
         match &self.model {
-            Model::Cone(model) => model.cells().rings(&state.conditions.load(), bolt),
+            Model::Cone(model) => model.rings(&state.conditions, bolt),
             Model::Elastic(model) => model.rings(self, bolt),
         }
     }

@@ -43,6 +43,8 @@ pub struct Joint {
     pub measured: Option<Measured>,
     /// Losses of clamp force asked for; without them losses act on the low force only.
     pub losses: Option<Losses>,
+    /// Bolts that are left out, counted from 0 in file order, rising; their holes stay.
+    pub missing: Vec<usize>,
     /// What the file did not state.
     pub assumptions: Vec<Assumption>,
 }

@@ -132,7 +132,7 @@ impl Chain<'_> {
             .zip(&self.groups)
             .map(|(fastener, group)| group.service_force(joint, fastener, (case, at)))
             .collect();
-        let forces: Vec<f64> = self.group_of.iter().map(|group| by_group[*group]).collect();
+        let forces = self.of_bolts(&by_group);
         let temperature = joint.service.cases[case].temperature;
         let law = self.force_law(&forces, temperature);
         let faces = (0..joint.interfaces())
@@ -229,6 +229,6 @@ impl Chain<'_> {
                 Ok(resistance.recip())
             })
             .collect::<Result<Vec<f64>, Failure>>()?;
-        Ok(self.group_of.iter().map(|group| by_group[*group]).collect())
+        Ok(self.of_bolts(&by_group))
     }
 }
