@@ -42,6 +42,8 @@ mod stacking;
 mod syntax;
 mod tightening;
 mod tree;
+mod variants;
+mod versions;
 mod walk;
 
 use toml::de::DeTable;
@@ -63,6 +65,7 @@ pub use maps::{Files, LONGEST_TABLE};
 pub use missing::NotLeftOut;
 pub use radiation::{RadiatingBack, STEFAN_BOLTZMANN, radiative_film};
 pub use schema::schema;
+pub use versions::{Version, read_versions, variant_names};
 
 /// Longest joint file, bytes.
 pub const LONGEST_FILE: usize = 1_000_000;
@@ -109,13 +112,7 @@ pub fn read_with(text: &str, sets: &[String]) -> Result<Joint, Faults> {
 /// the name as stated to the text, or to the reason why there is none. Faults in a table point
 /// into the table.
 pub fn read_with_files(text: &str, sets: &[String], files: &Files<'_>) -> Result<Joint, Faults> {
-    let start = text.len() + 1 + sets.iter().map(|set| set.len() + 1).sum::<usize>();
-    let mut tables = Tables::new(files, start);
-    let (joint, faults) = reading(text, sets, &mut tables);
-    match joint {
-        Some(joint) if faults.is_empty() => Ok(joint),
-        _ => Err(placed(text, sets, (tables.read, faults))),
-    }
+    versions::read_version(text, (sets, None), files)
 }
 
 /// Spans count through the file, then through the overrides and the tables, each after a line
@@ -147,7 +144,12 @@ fn placed(
     }
 }
 
-fn reading(text: &str, sets: &[String], tables: &mut Tables<'_>) -> (Option<Joint>, Vec<Fault>) {
+/// The joint of a file, or that of one of its variants, counted from 0.
+fn reading(
+    text: &str,
+    (sets, variant): (&[String], Option<usize>),
+    tables: &mut Tables<'_>,
+) -> (Option<Joint>, Vec<Fault>) {
     if text.len() > LONGEST_FILE {
         let told = fault(
             "file/too-large",
@@ -170,6 +172,10 @@ fn reading(text: &str, sets: &[String], tables: &mut Tables<'_>) -> (Option<Join
     let syntax = syntax::faults(&errors, text);
     let mut collector = Collector::default();
     let mut tree = Node::file(&table);
+    let variants = variants::taken(&mut tree, &mut collector);
+    if let Some(variant) = variant.and_then(|variant| variants.get(variant)) {
+        variant.apply((&mut tree, text), &mut collector);
+    }
     let mut start = text.len() + 1;
     for set in sets {
         overrides::apply(&mut tree, set, start, &mut collector);
@@ -257,6 +263,7 @@ fn assembled(file: &Record, tables: &mut Tables<'_>, collector: &mut Collector) 
         fillers: fillers?,
         measured: measured?,
         losses: losses?,
+        cost: file.number("cost"),
         missing: Vec::new(),
         assumptions: Vec::new(),
     };

@@ -43,6 +43,8 @@ pub struct Joint {
     pub measured: Option<Measured>,
     /// Losses of clamp force asked for; without them losses act on the low force only.
     pub losses: Option<Losses>,
+    /// What the joint costs by the user's own measure.
+    pub cost: Option<f64>,
     /// Bolts that are left out, counted from 0 in file order, rising; their holes stay.
     pub missing: Vec<usize>,
     /// What the file did not state.

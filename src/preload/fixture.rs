@@ -182,6 +182,7 @@ pub fn joint() -> Joint {
         fillers: vec![None],
         measured: None,
         losses: None,
+        cost: None,
         missing: Vec::new(),
         assumptions: Vec::new(),
     }
