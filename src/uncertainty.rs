@@ -4,14 +4,19 @@
 //! chain; quantiles are read from the outcomes. Bolts of one joint share one friction (one lot of
 //! lubricant), which is the unfavourable reading: independent bolts would average out.
 
+mod comparison;
 mod inputs;
 mod media;
 mod minimum;
 mod sweep;
 
+pub use comparison::{
+    Compared, Comparison, Contender, Sense, Verdict, comparison, side_by_side,
+};
 pub use inputs::{Input, inputs};
 pub use media::{InMedium, in_media};
 pub use sweep::{SweepOptions, sweep_along, torque_sweep};
+pub(crate) use sweep::worst_case;
 
 use rayon::prelude::*;
 

@@ -137,6 +137,24 @@ impl<'a> Chain<'a> {
         self.with(joint)
     }
 
+    /// The same joint without some bolts, by their numbers from 1; on a solved field grid and plates
+    /// are shared.
+    pub fn without(&self, numbers: &[usize]) -> Result<Chain<'static>, Failure> {
+        let joint = self.joint().without(numbers)?;
+        let mut chain = Chain {
+            joint: Cow::Owned(joint),
+            groups: self.groups.clone(),
+            group_of: self.group_of.clone(),
+            model: self.model.clone(),
+        };
+        chain.model = match &self.model {
+            Model::Cone(_) => Model::Cone(ConeModel::new(chain.joint())?),
+            Model::Elastic(model) => Model::Elastic(Box::new(model.afresh())),
+        };
+        chain.model = chain.levelled()?;
+        Ok(chain)
+    }
+
     /// The same plates and places in another joint.
     fn with(&self, joint: Joint) -> Result<Chain<'static>, Failure> {
         let mut chain = Chain {

@@ -193,6 +193,8 @@ pub struct Fastener {
     pub washer_thickness: f64,
     /// Number of washers in the grip; each adds a contact that settles.
     pub washers: u32,
+    /// What head, nut and washers are made of, by volume.
+    pub hardware: Hardware,
     /// Whether the head is a cylinder (socket head) rather than a hexagon.
     pub cylindrical_head: bool,
     /// How the far end holds.
@@ -209,6 +211,17 @@ pub struct Fastener {
     pub isolating: Option<Isolating>,
     /// Places in joint coordinates, m.
     pub places: Vec<[f64; 2]>,
+}
+
+/// Volumes of the parts of one bolt, m³; none where the catalogue has no size.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Hardware {
+    /// Head.
+    pub head: Option<f64>,
+    /// Nut with its height, m; none for a thread in the plate.
+    pub nut: Option<(f64, f64)>,
+    /// All washers of the bolt's own material.
+    pub washers: Option<f64>,
 }
 
 /// Isolating washers of a bolt, all alike.

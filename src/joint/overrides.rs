@@ -166,6 +166,11 @@ fn set_in(node: &mut Node, section: &'static Section, steps: &[Step], value: Giv
         ));
     }
     match (field.kind, rest) {
+        (Kind::Variants, _) => Err(Box::new(
+            bad(step, "a variant cannot be overridden")
+                .expecting("expected a field of the joint")
+                .help(EXAMPLE),
+        )),
         // A table that may be named in one word: a filler.
         (Kind::List(inner), []) if inner.shorthand.is_some() => {
             *slot(node, section, step)? = value.node(Kind::Table(inner));

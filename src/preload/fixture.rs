@@ -6,7 +6,7 @@ use crate::{
     catalog::{Datum, Grade, Material, MaterialKind, Status, Thread},
     joint::{
         Bounds, Compliance, ConeRule, ConeShape, Contact, Engagement, FaceFriction, Fastener,
-        Finish, Friction, HeadModel, Joint, Law, Medium, Outline, Plate, Seat, Service, Sink,
+        Finish, Friction, Hardware, HeadModel, Joint, Law, Medium, Outline, Plate, Seat, Service, Sink,
         Source, Tightening, TorqueTightening, Zone,
     },
 };
@@ -72,6 +72,11 @@ pub fn m6() -> Fastener {
         hole_radius: vec![3.3e-3; 2],
         washer_thickness: 0.0,
         washers: 0,
+        hardware: Hardware {
+            head: None,
+            nut: None,
+            washers: None,
+        },
         cylindrical_head: false,
         engagement: Engagement::Nut,
         tightening: Tightening::Torque(TorqueTightening {

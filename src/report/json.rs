@@ -7,7 +7,7 @@ use crate::{
         RequirementResult, RingRow, TorqueSweep,
     },
     joint::{Limit, Plane, RequirementKind},
-    report::{media::vacuum_over, number::inverse},
+    report::{media::vacuum_over, number::inverse, text::left_out},
     uncertainty::InMedium,
 };
 use serde_json::{Map, Value, json};
@@ -46,6 +46,7 @@ pub fn estimate(estimate: &Estimate) -> Value {
             json!({ "source": estimate.source_plane, "sink": estimate.sink_plane }),
         ),
         ("heat", json!(estimate.heat)),
+        ("without", json!(left_out(estimate))),
         ("requirement", worst(estimate)),
         ("cases", json!(cases)),
         ("cautions", cautions(&estimate.cautions)),
@@ -124,6 +125,7 @@ fn case(case: &CaseResult) -> Map<String, Value> {
 fn bolt(bolt: &BoltResult) -> Value {
     json!({
         "at": bolt.at,
+        "missing": bolt.missing,
         "force": band(&bolt.force),
         "force_in_service": band(&bolt.force_in_service),
         "strength_use": strength_use(bolt.strength_use),
