@@ -2,6 +2,7 @@
 
 mod axis;
 mod clip;
+mod comparison;
 mod cumulative;
 mod flags;
 mod fonts;
@@ -16,6 +17,7 @@ mod sheet;
 mod torque;
 mod warmth;
 
+pub use comparison::{ComparisonPlot, ComparisonRow};
 pub use cumulative::{CumulativePlot, Curve, RadiusMark};
 pub use plan::{
     DetailKind, FacePair, PlanBolt, PlanDetail, PlanMap, PlanOutline, PlanPair, PlanShape, Scale,
@@ -49,6 +51,8 @@ pub enum Drawing {
     Cumulative(CumulativePlot),
     /// Resistance against torque.
     Torque(TorqueSweep),
+    /// Several joints side by side.
+    Comparison(Box<ComparisonPlot>),
 }
 
 /// Why a drawing cannot be made.
@@ -94,6 +98,7 @@ fn sheet(drawing: &Drawing) -> Result<sheet::Sheet, FigureError> {
         Drawing::Section(plot) => section::draw(plot),
         Drawing::Cumulative(plot) => cumulative::draw(plot),
         Drawing::Torque(sweep) => torque::draw(sweep),
+        Drawing::Comparison(plot) => comparison::draw(plot),
     }
 }
 

@@ -68,7 +68,7 @@ pub use mass::Mass;
 pub use missing::NotLeftOut;
 pub use radiation::{RadiatingBack, STEFAN_BOLTZMANN, radiative_film};
 pub use schema::schema;
-pub use versions::{Version, read_versions, variant_names};
+pub use versions::{Version, read_version, read_versions, variant_names};
 
 /// Longest joint file, bytes.
 pub const LONGEST_FILE: usize = 1_000_000;

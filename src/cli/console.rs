@@ -126,6 +126,18 @@ impl Trouble {
         }
     }
 
+    /// The same, with the file it speaks of.
+    pub fn of_file(self, name: &str) -> Self {
+        match self {
+            Self::Failure(message) => Self::Failure(format!("{name}: {message}")),
+            Self::Usage { message, help } => Self::Usage {
+                message: format!("{name}: {message}"),
+                help,
+            },
+            other => other,
+        }
+    }
+
     /// How the run ends because of it.
     pub fn outcome(&self) -> Outcome {
         match self {
@@ -172,6 +184,15 @@ impl Console {
     /// A console that keeps all it is given, for work that goes on beside other work.
     pub fn kept() -> Self {
         Self(To::Kept(Vec::new()))
+    }
+
+    /// All that was kept, for tests.
+    #[cfg(test)]
+    pub fn texts(self) -> String {
+        match self.0 {
+            To::Kept(texts) => texts.into_iter().map(|(_, text)| text).collect(),
+            To::Streams(_) => String::new(),
+        }
     }
 
     /// Gives out what another console has kept, in its order.

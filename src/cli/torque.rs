@@ -109,7 +109,8 @@ impl Torque {
     }
 }
 
-fn format(path: &Path) -> Result<Format, Trouble> {
+/// The format of a figure, by the ending of its name.
+pub fn format(path: &Path) -> Result<Format, Trouble> {
     let ending = path
         .extension()
         .and_then(|ending| ending.to_str())

@@ -39,10 +39,7 @@ pub fn read_versions(
     files: &Files<'_>,
 ) -> Result<Vec<Version>, Faults> {
     let stated = read_version(text, (sets, None), files);
-    let mut all = Faults {
-        sources: Vec::new(),
-        faults: Vec::new(),
-    };
+    let mut all = placed(text, sets, (Vec::new(), Vec::new()));
     let mut versions = Vec::new();
     match stated {
         Ok(joint) => versions.push(Version { name: None, joint }),
@@ -68,7 +65,7 @@ pub fn read_versions(
 }
 
 /// Reads the joint of a file, or one of its variants, counted from 0.
-pub(super) fn read_version(
+pub fn read_version(
     text: &str,
     (sets, variant): (&[String], Option<usize>),
     files: &Files<'_>,

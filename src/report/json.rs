@@ -12,9 +12,11 @@ use crate::{
 };
 use serde_json::{Map, Value, json};
 
+mod comparison;
 mod pressure;
 mod temperatures;
 
+pub use comparison::comparison;
 pub(super) use pressure::differences;
 
 /// Number of the file format and of this contract.

@@ -70,6 +70,8 @@ pub struct Comparison {
     pub best: usize,
     /// What best means.
     pub sense: Sense,
+    /// What all joints must meet as source to sink, K/W; none where they differ in it.
+    pub required: Option<f64>,
 }
 
 /// A joint before it is compared.
@@ -95,6 +97,11 @@ pub fn comparison(contenders: Vec<Contender>, options: &Options) -> Result<Compa
         .map(|each| worst_case(each.chain))
         .collect::<Result<Vec<usize>, Failure>>()?;
     let sense = sense(&contenders);
+    let limits: Vec<Option<f64>> = contenders
+        .iter()
+        .map(|each| required(each.chain.joint()).map(|(limit, _)| limit))
+        .collect();
+    let one = limits.iter().all(|limit| *limit == limits[0]);
     let nominal: Vec<f64> = contenders
         .iter()
         .zip(&cases)
@@ -144,6 +151,7 @@ pub fn comparison(contenders: Vec<Contender>, options: &Options) -> Result<Compa
         joints: joints.collect(),
         best,
         sense,
+        required: if one { limits[0] } else { None },
     })
 }
 
