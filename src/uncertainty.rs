@@ -10,13 +10,11 @@ mod media;
 mod minimum;
 mod sweep;
 
-pub use comparison::{
-    Compared, Comparison, Contender, Sense, Verdict, comparison, side_by_side,
-};
+pub use comparison::{Compared, Comparison, Contender, Sense, Verdict, comparison, side_by_side};
 pub use inputs::{Input, inputs};
 pub use media::{InMedium, in_media};
-pub use sweep::{SweepOptions, sweep_along, torque_sweep};
 pub(crate) use sweep::worst_case;
+pub use sweep::{SweepOptions, sweep_along, torque_sweep};
 
 use rayon::prelude::*;
 

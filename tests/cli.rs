@@ -1,5 +1,9 @@
 //! The command line: what it prints where, how it ends, what it leaves on disk.
 
+#[path = "cli/batch.rs"]
+mod batch;
+#[path = "cli/compare.rs"]
+mod compare;
 #[path = "cli/fields.rs"]
 mod fields;
 #[path = "cli/tables.rs"]
@@ -64,7 +68,7 @@ ringsum --help                 lists every command
 fn help_lists_the_commands_and_hides_those_for_packagers() {
     let help = stdout(&ringsum().arg("--help").assert().code(0).stderr_eq(""));
     for command in [
-        "new", "check", "estimate", "torque", "draw", "list", "explain",
+        "new", "check", "estimate", "compare", "torque", "draw", "list", "explain",
     ] {
         assert!(
             help.contains(&format!("\n  {command}")),
@@ -86,6 +90,7 @@ fn every_command_has_help_and_usage_errors_go_to_standard_error() {
         "new",
         "check",
         "estimate",
+        "compare",
         "torque",
         "draw",
         "list",
@@ -106,7 +111,7 @@ fn every_command_has_help_and_usage_errors_go_to_standard_error() {
             .stdout_eq("");
         assert!(stderr(&wrong).contains("--nonsense"));
     }
-    for command in ["check", "estimate", "torque", "draw"] {
+    for command in ["check", "estimate", "compare", "torque", "draw"] {
         ringsum().arg(command).assert().code(2).stdout_eq("");
     }
 }

@@ -208,7 +208,9 @@ mod tests {
         let files: Vec<PathBuf> = (0..20).map(|k| PathBuf::from(format!("{k}"))).collect();
         let work = |index: usize, _: &Path, console: &mut Console| {
             // The first ones take longest, so that the others wait for them.
-            std::thread::sleep(std::time::Duration::from_millis(20_u64.saturating_sub(index as u64)));
+            std::thread::sleep(std::time::Duration::from_millis(
+                20_u64.saturating_sub(index as u64),
+            ));
             console.result(&format!("{index} "))?;
             if index == 7 {
                 return Err(Trouble::Failure("seven".to_owned()));

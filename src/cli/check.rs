@@ -38,23 +38,26 @@ impl Check {
         let files = self.batch.files(&self.files);
         input::stdin_at_most_once(&files)?;
         let layout = Layout::of_batch(self.files.len());
-        self.batch.run(&files, console, &|_, path, console| {
-            match read_versions(path, &self.sets, console) {
-                Ok((source, _)) if self.json => {
-                    console.json(&listing::accepted(&source.name), layout)?;
-                    Ok(Outcome::Done)
-                }
-                Ok((source, versions)) => {
-                    console.result(&accepted(&source.name, &versions))?;
-                    Ok(Outcome::Done)
-                }
-                Err(refused) if self.json => {
-                    console.json(&refused.json(), layout)?;
-                    Ok(Outcome::Faulty)
-                }
-                Err(refused) => Err(refused.trouble()),
-            }
-        })
+        self.batch
+            .run(
+                &files,
+                console,
+                &|_, path, console| match read_versions(path, &self.sets, console) {
+                    Ok((source, _)) if self.json => {
+                        console.json(&listing::accepted(&source.name), layout)?;
+                        Ok(Outcome::Done)
+                    }
+                    Ok((source, versions)) => {
+                        console.result(&accepted(&source.name, &versions))?;
+                        Ok(Outcome::Done)
+                    }
+                    Err(refused) if self.json => {
+                        console.json(&refused.json(), layout)?;
+                        Ok(Outcome::Faulty)
+                    }
+                    Err(refused) => Err(refused.trouble()),
+                },
+            )
     }
 }
 

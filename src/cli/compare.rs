@@ -98,7 +98,10 @@ impl Compare {
         } else {
             console.result(&comparison::comparison(&found))?;
         }
-        let cautioned = found.joints.iter().any(|joint| joint.estimate.has_cautions());
+        let cautioned = found
+            .joints
+            .iter()
+            .any(|joint| joint.estimate.has_cautions());
         Ok(if self.strict && cautioned {
             Outcome::Cautioned
         } else {
@@ -192,7 +195,10 @@ fn plot(entries: &[Entry], (found, maps): (&Comparison, &[FieldMap])) -> Compari
             })
         });
     let first = &found.joints[0];
-    let titles: Vec<&str> = entries.iter().map(|entry| entry.joint.title.as_str()).collect();
+    let titles: Vec<&str> = entries
+        .iter()
+        .map(|entry| entry.joint.title.as_str())
+        .collect();
     let one = titles.iter().all(|title| *title == titles[0]);
     ComparisonPlot {
         title: if one {
@@ -217,7 +223,11 @@ fn plot(entries: &[Entry], (found, maps): (&Comparison, &[FieldMap])) -> Compari
 /// What stands below a name: bolts, mass, odds.
 fn note(joint: &Compared) -> String {
     let ending = if joint.bolts == 1 { "" } else { "s" };
-    let mut text = format!("{} bolt{ending}, {} kg", joint.bolts, brief(joint.mass.total()));
+    let mut text = format!(
+        "{} bolt{ending}, {} kg",
+        joint.bolts,
+        brief(joint.mass.total())
+    );
     if let Some(odds) = joint.odds {
         text.push_str(&format!("; best wins {:.0} of 100", 100.0 * odds));
     }

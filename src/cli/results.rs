@@ -67,7 +67,12 @@ impl Results {
     }
 
     /// Writes the result of one file, and keeps its rows of the table.
-    pub fn put(&self, index: usize, object: &serde_json::Value, rows: String) -> Result<(), Trouble> {
+    pub fn put(
+        &self,
+        index: usize,
+        object: &serde_json::Value,
+        rows: String,
+    ) -> Result<(), Trouble> {
         self.rows
             .lock()
             .unwrap_or_else(PoisonError::into_inner)
@@ -94,6 +99,8 @@ pub fn stem(path: &Path) -> String {
     if path == Path::new("-") {
         return "stdin".to_owned();
     }
-    path.file_stem()
-        .map_or_else(|| input::name(path), |stem| stem.to_string_lossy().into_owned())
+    path.file_stem().map_or_else(
+        || input::name(path),
+        |stem| stem.to_string_lossy().into_owned(),
+    )
 }

@@ -71,7 +71,9 @@ pub(super) fn draw(plot: &ComparisonPlot) -> Result<Sheet, FigureError> {
         .iter()
         .map(|row| small::size(&row.pressure, scale))
         .collect::<Result<Vec<[f64; 2]>, FigureError>>()?;
-    let widest = sizes.iter().fold(120.0, |most: f64, size| most.max(size[0]));
+    let widest = sizes
+        .iter()
+        .fold(120.0, |most: f64, size| most.max(size[0]));
     let left = MARGIN + NAMES;
     let maps = left + BANDS + GAP;
     let mut sheet = Sheet::new(maps + widest + MARGIN);
@@ -84,7 +86,10 @@ pub(super) fn draw(plot: &ComparisonPlot) -> Result<Sheet, FigureError> {
         bottom: top + whole,
     };
     upright_lines(&mut sheet, frame, &across);
-    if let Some(limit) = plot.required.filter(|limit| (0.0..=1.0).contains(&across.place(*limit))) {
+    if let Some(limit) = plot
+        .required
+        .filter(|limit| (0.0..=1.0).contains(&across.place(*limit)))
+    {
         let x = frame.left + across.place(limit) * frame.width();
         sheet.line(&[[x, frame.top], [x, frame.bottom]], REQUIRED);
     }
@@ -174,7 +179,10 @@ fn length_scale(plot: &ComparisonPlot) -> Result<f64, FigureError> {
 fn upright_lines(sheet: &mut Sheet, frame: Frame, axis: &Axis) {
     for (value, _) in axis.ticks(6) {
         let x = frame.left + axis.place(value) * frame.width();
-        sheet.line(&[[x, frame.top], [x, frame.bottom]], Stroke::solid(0.5, FAINT));
+        sheet.line(
+            &[[x, frame.top], [x, frame.bottom]],
+            Stroke::solid(0.5, FAINT),
+        );
     }
 }
 
@@ -213,7 +221,10 @@ fn band(
     }
     let x = at(nominal);
     let stroke = Stroke::solid(2.0, ramp::colour(0.85));
-    sheet.line(&[[x, middle - HALF - 2.0], [x, middle + HALF + 2.0]], stroke);
+    sheet.line(
+        &[[x, middle - HALF - 2.0], [x, middle + HALF + 2.0]],
+        stroke,
+    );
     if row.best {
         hollow_dot(sheet, [x, middle], stroke.colour);
     }
@@ -234,7 +245,10 @@ fn key(plot: &ComparisonPlot) -> Vec<(Sample, String)> {
     } else {
         (Sample::Line(stroke), "nominal".to_owned())
     }];
-    items.push((Sample::HollowDot(stroke.colour), "best at nominal".to_owned()));
+    items.push((
+        Sample::HollowDot(stroke.colour),
+        "best at nominal".to_owned(),
+    ));
     if plot.required.is_some() {
         items.push((Sample::Line(REQUIRED), "requirement".to_owned()));
     }

@@ -49,7 +49,10 @@ impl Joint {
         for (index, plate) in self.plates.iter().enumerate() {
             match plate.material.density.as_ref() {
                 _ if plate.sandwich.is_some() => {
-                    left_out.push(format!("{}: the density of its core is not known", plate.name));
+                    left_out.push(format!(
+                        "{}: the density of its core is not known",
+                        plate.name
+                    ));
                 }
                 Some(density) => plates += density.value * self.volume(index),
                 None => left_out.push(format!(
@@ -88,7 +91,11 @@ impl Joint {
             .map(|fastener| fastener.places.len() as f64 * disc(fastener.hole_radius[index]))
             .sum();
         let openings: f64 = plate.cutouts.iter().map(area).sum();
-        let ribs: f64 = plate.ribs.iter().map(|rib| rib.height * area(&rib.patch)).sum();
+        let ribs: f64 = plate
+            .ribs
+            .iter()
+            .map(|rib| rib.height * area(&rib.patch))
+            .sum();
         let feet = plate.feet.as_ref().map_or(0.0, |feet| {
             feet.height * feet.at.iter().map(area).sum::<f64>()
         });
@@ -226,7 +233,11 @@ mod tests {
             ["5 mm", "5 mm"],
         );
         let mass = whole.mass();
-        assert!((mass.plates / 0.128_317 - 1.0).abs() < 1e-5, "{}", mass.plates);
+        assert!(
+            (mass.plates / 0.128_317 - 1.0).abs() < 1e-5,
+            "{}",
+            mass.plates
+        );
         // Steel of 7850 kg/m³ within 0.5 %: head 0.8660 · 8.08² · 3.5 = 197.9, nut of 4.7 mm
         // (0.8660 · 8.08² − π/4 · 4.480²) · 4.7 = 191.6, rod π/4 · 4.480² · (10 + 4.7 + 1.6) = 256.9 mm³:
         // 646.4 mm³, 5.074 g each. The catalogue rounds its seats.

@@ -75,7 +75,10 @@ mod tests {
         let joint = fixture::joint();
         let without = joint.without(&[2, 2]).expect("one is left");
         assert_eq!(without.fasteners, joint.fasteners);
-        assert_eq!((without.is_missing(0), without.is_missing(1)), (false, true));
+        assert_eq!(
+            (without.is_missing(0), without.is_missing(1)),
+            (false, true)
+        );
         assert_eq!((without.clamping(), without.clamping_of(0)), (1, 1));
     }
 

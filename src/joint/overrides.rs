@@ -103,7 +103,6 @@ pub(super) enum Given<'t> {
 }
 
 impl Given<'_> {
-
     /// The value as TOML, or as text when it is bare text such as `6 mm`; a field that takes
     /// text takes a bare number as text too, so that `grade=8.8` is a grade.
     fn node(self, kind: Kind) -> Node {

@@ -79,7 +79,9 @@ impl Joint {
         let ends = self.warm_zones().into_iter().chain([self.cold_zones()?]);
         let kept = self.plates.iter().all(plain)
             && self.missing.is_empty()
-            && ends.into_iter().all(|zones| motion.keeps_zones((centre, near), &zones));
+            && ends
+                .into_iter()
+                .all(|zones| motion.keeps_zones((centre, near), &zones));
         if !kept {
             return None;
         }
@@ -180,9 +182,13 @@ fn alike(one: &Zone, other: &Zone, near: f64) -> bool {
                 size: own,
             },
         ) => same(centre, at) && same(size, own),
-        (Zone::Disc { centre, radius }, Zone::Disc { centre: at, radius: own }) => {
-            same(centre, at) && (radius - own).abs() <= near
-        }
+        (
+            Zone::Disc { centre, radius },
+            Zone::Disc {
+                centre: at,
+                radius: own,
+            },
+        ) => same(centre, at) && (radius - own).abs() <= near,
         _ => false,
     }
 }

@@ -1,13 +1,13 @@
 //! `[[variant]]`: other versions of a joint in its own file, as overrides with a name.
 
 use crate::{
+    diagnostic::Fault,
     joint::{
         collector::{Collector, Wording, fault},
         overrides::{self, Given, Step},
         tree::{Form, Key, Node, short},
         walk::more_than,
     },
-    diagnostic::Fault,
 };
 
 /// The key of the file.
@@ -145,7 +145,10 @@ fn set(
         }
     };
     let path: Vec<Step> = before.iter().cloned().chain(own).collect();
-    let in_braces = || text.get(node.span.start..).is_some_and(|rest| rest.starts_with('{'));
+    let in_braces = || {
+        text.get(node.span.start..)
+            .is_some_and(|rest| rest.starts_with('{'))
+    };
     if let Form::Table(entries) = &node.form
         && !in_braces()
     {

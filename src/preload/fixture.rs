@@ -6,8 +6,8 @@ use crate::{
     catalog::{Datum, Grade, Material, MaterialKind, Status, Thread},
     joint::{
         Bounds, Compliance, ConeRule, ConeShape, Contact, Engagement, FaceFriction, Fastener,
-        Finish, Friction, Hardware, HeadModel, Joint, Law, Medium, Outline, Plate, Seat, Service, Sink,
-        Source, Tightening, TorqueTightening, Zone,
+        Finish, Friction, Hardware, HeadModel, Joint, Law, Medium, Outline, Plate, Seat, Service,
+        Sink, Source, Tightening, TorqueTightening, Zone,
     },
 };
 

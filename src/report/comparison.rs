@@ -113,17 +113,38 @@ type Column<'a> = (&'a str, Box<dyn Fn(&Compared) -> Option<String>>);
 /// Rise, requirement, strength, mass, bolts, cost and the worst loss.
 fn extras(found: &Comparison) -> String {
     let columns: [Column; 11] = [
-        ("rise K\nnominal", Box::new(|joint| Some(four(joint.worst()?.rise?.source.nominal)))),
-        ("rise K\nhigh", Box::new(|joint| joint.worst()?.rise?.source.high.map(four))),
+        (
+            "rise K\nnominal",
+            Box::new(|joint| Some(four(joint.worst()?.rise?.source.nominal))),
+        ),
+        (
+            "rise K\nhigh",
+            Box::new(|joint| joint.worst()?.rise?.source.high.map(four)),
+        ),
         ("required", Box::new(requirement)),
-        ("of yield\nhighest", Box::new(|joint| strength(joint).map(percent))),
+        (
+            "of yield\nhighest",
+            Box::new(|joint| strength(joint).map(percent)),
+        ),
         ("bolts", Box::new(|joint| Some(joint.bolts.to_string()))),
-        ("fasteners\ng", Box::new(|joint| Some(four(1e3 * joint.mass.fasteners)))),
+        (
+            "fasteners\ng",
+            Box::new(|joint| Some(four(1e3 * joint.mass.fasteners))),
+        ),
         ("all\nkg", Box::new(|joint| Some(four(joint.mass.total())))),
         ("cost", Box::new(|joint| joint.cost.map(brief))),
-        ("lost\nbolt", Box::new(|joint| Some(joint.loss.as_ref()?.bolt.to_string()))),
-        ("then K/W\nnominal", Box::new(|joint| joint.loss.as_ref().map(|_| optional(lost(joint))))),
-        ("then\nworse", Box::new(|joint| Some(percent(joint.loss.as_ref()?.growth? - 1.0)))),
+        (
+            "lost\nbolt",
+            Box::new(|joint| Some(joint.loss.as_ref()?.bolt.to_string())),
+        ),
+        (
+            "then K/W\nnominal",
+            Box::new(|joint| joint.loss.as_ref().map(|_| optional(lost(joint)))),
+        ),
+        (
+            "then\nworse",
+            Box::new(|joint| Some(percent(joint.loss.as_ref()?.growth? - 1.0))),
+        ),
     ];
     let told: Vec<&Column> = columns
         .iter()
@@ -158,7 +179,11 @@ fn requirement(joint: &Compared) -> Option<String> {
 
 /// Highest equivalent stress over yield of any bolt.
 pub(super) fn strength(joint: &Compared) -> Option<f64> {
-    let uses = joint.worst()?.bolts.iter().filter_map(|bolt| bolt.strength_use);
+    let uses = joint
+        .worst()?
+        .bolts
+        .iter()
+        .filter_map(|bolt| bolt.strength_use);
     uses.map(|[_, highest]| highest).reduce(f64::max)
 }
 
@@ -176,7 +201,10 @@ fn verdicts(found: &Comparison) -> String {
         Sense::Pass => "least",
         Sense::Resist => "largest",
     };
-    let mut text = format!("best     {}: {what} source to sink at nominal\n", plain(&best.name));
+    let mut text = format!(
+        "best     {}: {what} source to sink at nominal\n",
+        plain(&best.name)
+    );
     for joint in &found.joints {
         if let Some(verdict) = joint.verdict {
             let line = format!("against  {}", sentence(joint, best, verdict));
@@ -193,17 +221,24 @@ fn sentence(joint: &Compared, best: &Compared, verdict: Verdict) -> String {
             case.results.source_to_sink.resistance.nominal
         })
     };
-    let apart = (of(joint) / of(best) - 1.0).abs();
+    let ratio = of(joint) / of(best);
+    let ratio = ratio.max(ratio.recip());
+    let apart = if ratio > 2.0 {
+        format!("{} times", four(ratio))
+    } else {
+        percent(ratio - 1.0)
+    };
     let odds = joint.odds.map_or_else(String::new, |odds| {
         format!("better in {:.0} of 100 drawn pairs, ", 100.0 * odds)
     });
     let name = plain(&joint.name);
-    let apart = percent(apart);
     match verdict {
         Verdict::Surely => format!("{name}: {odds}by {apart} at nominal: surely better"),
         Verdict::Likely => format!("{name}: {odds}by {apart} at nominal: likely better"),
         Verdict::Even => {
-            format!("{name}: {odds}by {apart} at nominal: the choice does not matter, scatter hides it")
+            format!(
+                "{name}: {odds}by {apart} at nominal: the choice does not matter, scatter hides it"
+            )
         }
         Verdict::WithinError => {
             let error = joint.worst().map_or(f64::NAN, |case| case.numerical_error);
@@ -230,7 +265,11 @@ fn notes(found: &Comparison) -> String {
              inputs that only one has are independent",
         );
     }
-    let losses: Vec<&Compared> = found.joints.iter().filter(|joint| joint.loss.is_some()).collect();
+    let losses: Vec<&Compared> = found
+        .joints
+        .iter()
+        .filter(|joint| joint.loss.is_some())
+        .collect();
     if let Some(loss) = losses.first().and_then(|joint| joint.loss.as_ref()) {
         let level = match found.joints[0].estimate.field {
             "cone" => String::new(),
@@ -242,11 +281,20 @@ fn notes(found: &Comparison) -> String {
     }
     for joint in &losses {
         if let Some(failure) = joint.loss.as_ref().and_then(|loss| loss.failure.as_ref()) {
-            tell(&format!("{} without that bolt: {failure}", plain(&joint.name)));
+            tell(&format!(
+                "{} without that bolt: {failure}",
+                plain(&joint.name)
+            ));
         }
     }
-    tell("mass: bolts, nuts and washers of the catalogue (within about 10 %), and plates with their density");
-    for joint in found.joints.iter().filter(|joint| !joint.mass.left_out.is_empty()) {
+    tell(
+        "mass: bolts, nuts and washers of the catalogue (within about 10 %), and plates with their density",
+    );
+    for joint in found
+        .joints
+        .iter()
+        .filter(|joint| !joint.mass.left_out.is_empty())
+    {
         tell(&format!(
             "not in the mass of {}: {}",
             plain(&joint.name),
@@ -254,13 +302,20 @@ fn notes(found: &Comparison) -> String {
         ));
     }
     let first = found.joints.first().map(|joint| joint.estimate.heat);
-    if found.joints.iter().any(|joint| Some(joint.estimate.heat) != first) {
+    if found
+        .joints
+        .iter()
+        .any(|joint| Some(joint.estimate.heat) != first)
+    {
         tell("the joints state different heat: rises belong to each joint's own");
     }
     for joint in &found.joints {
         if joint.estimate.cases.len() > 1 {
             let case = joint.worst().map_or("", |case| case.name);
-            tell(&format!("{}: {case} case, the one it stands worst in", plain(&joint.name)));
+            tell(&format!(
+                "{}: {case} case, the one it stands worst in",
+                plain(&joint.name)
+            ));
         }
         let mut codes: Vec<&str> = joint
             .estimate
@@ -271,7 +326,11 @@ fn notes(found: &Comparison) -> String {
             .collect();
         codes.dedup();
         if !codes.is_empty() {
-            tell(&format!("{}: grave cautions: {}", plain(&joint.name), codes.join(", ")));
+            tell(&format!(
+                "{}: grave cautions: {}",
+                plain(&joint.name),
+                codes.join(", ")
+            ));
         }
     }
     text

@@ -169,6 +169,9 @@ mod tests {
     fn every_line_has_every_column() {
         let count = |line: &str| line.trim_end().split(',').count();
         assert_eq!(count(&header()), COLUMNS.len());
-        assert_eq!(count(&without("a.toml", Ended::Failed, "no")), COLUMNS.len());
+        assert_eq!(
+            count(&without("a.toml", Ended::Failed, "no")),
+            COLUMNS.len()
+        );
     }
 }

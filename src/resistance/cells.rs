@@ -213,11 +213,7 @@ impl Plan {
                 (self.hole_radius(bolt), None),
                 &|other| self.hole_radius(other),
             ),
-            source: extent(
-                &[&nearer, &plate[0], &zone],
-                (holes[0], Some(0)),
-                &hole(0),
-            ),
+            source: extent(&[&nearer, &plate[0], &zone], (holes[0], Some(0)), &hole(0)),
             others,
         }
     }
@@ -230,17 +226,18 @@ impl Plan {
         let on_the_faces = self.outlines.iter().all(|(outline, origin)| {
             Region::new(&outline_sides(outline, *origin, at)).holds_disc(reach)
         });
-        let clear = |to: [f64; 2], radius: f64| {
-            (to[0] - at[0]).hypot(to[1] - at[1]) >= reach + radius
-        };
+        let clear =
+            |to: [f64; 2], radius: f64| (to[0] - at[0]).hypot(to[1] - at[1]) >= reach + radius;
         on_the_faces
             && self
                 .empty
                 .iter()
                 .all(|hole| clear(hole.at, hole.radius_in(None)))
-            && self.sites.iter().enumerate().all(|(other, site)| {
-                other == bolt || clear(site.at, self.hole_radius(other))
-            })
+            && self
+                .sites
+                .iter()
+                .enumerate()
+                .all(|(other, site)| other == bolt || clear(site.at, self.hole_radius(other)))
     }
 
     fn overlapping(&self, bolt: usize) -> bool {

@@ -170,9 +170,8 @@ fn verdict(odds: Option<f64>, within_error: bool) -> Verdict {
 
 /// A joint that must resist at least so much sets the sense for all.
 fn sense(contenders: &[Contender]) -> Sense {
-    let resists = |each: &Contender| {
-        matches!(required(each.chain.joint()), Some((_, Limit::Least)))
-    };
+    let resists =
+        |each: &Contender| matches!(required(each.chain.joint()), Some((_, Limit::Least)));
     if contenders.iter().any(resists) {
         Sense::Resist
     } else {

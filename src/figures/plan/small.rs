@@ -9,7 +9,10 @@ use crate::figures::{
 };
 
 /// Width and height of a map on paper at a scale, points.
-pub(in crate::figures) fn size(map: &PlanMap, points_per_metre: f64) -> Result<[f64; 2], FigureError> {
+pub(in crate::figures) fn size(
+    map: &PlanMap,
+    points_per_metre: f64,
+) -> Result<[f64; 2], FigureError> {
     Ok(extent(map.window)?.map(|length| length * points_per_metre))
 }
 
