@@ -291,10 +291,10 @@ fn on_the_cone_the_hole_of_a_lost_bolt_stays() {
 #[test]
 fn the_worst_loss_is_that_of_the_bolt_nobody_stands_in_for() {
     let joint = read(PLATES, &[]);
-    let loss = worst_loss(&joint, Choice::Cone, (0, &Watch::none()))
+    let chain = Chain::new(&joint).expect("a cone");
+    let loss = worst_loss(&chain, Choice::Cone, (0, &Watch::none()))
         .expect("a number")
         .expect("six bolts");
-    let chain = Chain::new(&joint).expect("a cone");
     let nominal = |chain: &Chain| {
         let state = chain.state(0, &Realisation::default()).expect("a state");
         state.path.source_to_sink
@@ -311,6 +311,7 @@ fn the_worst_loss_is_that_of_the_bolt_nobody_stands_in_for() {
     // Corners are alike, and so are the two in the middle.
     assert_eq!(loss.alike, if [2, 5].contains(&loss.bolt) { 2 } else { 4 });
     let one = read(PLATES, &["fastener.at=[[\"50 mm\", \"30 mm\"]]"]);
+    let one = Chain::new(&one).expect("a cone");
     let none = worst_loss(&one, Choice::Cone, (0, &Watch::none())).expect("a number");
     assert_eq!(none, None);
 }

@@ -453,7 +453,7 @@ fn hostile_titles_stay_text() {
             Drawing::Comparison(plot) => {
                 plot.title = HOSTILE.repeat(40);
                 plot.rows[0].name = HOSTILE.repeat(9);
-                plot.rows[0].note = HOSTILE.into();
+                plot.rows[0].notes[0] = HOSTILE.into();
             }
             Drawing::Faces(pair) => {
                 pair.warm.title = HOSTILE.repeat(40);

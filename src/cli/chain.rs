@@ -135,7 +135,7 @@ pub fn compared(
         let loss = match losses {
             Losses::Weighed => {
                 let case = uncertainty::worst_case(chain).map_err(failed(entry))?;
-                estimate::worst_loss(&entry.joint, choice, (case, watch)).map_err(failed(entry))?
+                estimate::worst_loss(chain, choice, (case, watch)).map_err(failed(entry))?
             }
             Losses::Left => None,
         };

@@ -188,7 +188,7 @@ fn plot(entries: &[Entry], (found, maps): (&Comparison, &[FieldMap])) -> Compari
             let case = joint.estimate.cases.get(joint.case)?;
             Some(ComparisonRow {
                 name: joint.name.clone(),
-                note: note(joint),
+                notes: notes(joint),
                 band: case.results.source_to_sink.resistance,
                 best: index == found.best,
                 pressure: drawings::pressure(&entry.joint, &joint.estimate, map),
@@ -221,15 +221,15 @@ fn plot(entries: &[Entry], (found, maps): (&Comparison, &[FieldMap])) -> Compari
 }
 
 /// What stands below a name: bolts, mass, odds.
-fn note(joint: &Compared) -> String {
+fn notes(joint: &Compared) -> Vec<String> {
     let ending = if joint.bolts == 1 { "" } else { "s" };
-    let mut text = format!(
+    let mut lines = vec![format!(
         "{} bolt{ending}, {} kg",
         joint.bolts,
         brief(joint.mass.total())
-    );
+    )];
     if let Some(odds) = joint.odds {
-        text.push_str(&format!("; best wins {:.0} of 100", 100.0 * odds));
+        lines.push(format!("best is better in {:.0} of 100", 100.0 * odds));
     }
-    text
+    lines
 }

@@ -1,9 +1,6 @@
 //! One bolt lost: which loss costs most.
 
-use crate::{
-    estimate::{Chain, Choice, Failure, Fineness, Realisation, Watch},
-    joint::Joint,
-};
+use crate::estimate::{Chain, Choice, Failure, Fineness, Realisation, Watch};
 
 /// The single loss that costs most.
 #[derive(Clone, Debug, PartialEq)]
@@ -32,20 +29,27 @@ fn quick(choice: Choice) -> Choice {
     }
 }
 
-/// The worst single loss of a joint in one case, at nominal; none where one bolt holds it alone.
+/// The worst single loss of a joint in one case, at nominal, whose chain stands on a choice; none where one bolt holds it alone.
 ///
 /// Bolts that stand alike are tried once. A solved field is solved on the fast level with and without
 /// each bolt, and the ratio of both is told: what the level errs by is in both.
 pub fn worst_loss(
-    joint: &Joint,
+    chain: &Chain,
     choice: Choice,
     (case, watch): (usize, &Watch),
 ) -> Result<Option<Loss>, Failure> {
+    let joint = chain.joint();
     if joint.clamping() < 2 {
         return Ok(None);
     }
-    let chain = Chain::of(joint, quick(choice), watch)?;
-    let whole = source_to_sink(&chain, case)?;
+    let own;
+    let chain = if quick(choice) == choice {
+        chain
+    } else {
+        own = Chain::of(joint, quick(choice), watch)?;
+        &own
+    };
+    let whole = source_to_sink(chain, case)?;
     let losses = joint
         .like_bolts()
         .into_iter()

@@ -13,7 +13,7 @@ use crate::{
         picture::Picture,
         plan::{PlanMap, small},
         ramp::{self, Ramp},
-        sheet::{ACCENT, Colour, FAINT, GREY, INK, LABEL, NARROW, Sheet, Stroke, WIDE},
+        sheet::{ACCENT, Colour, FAINT, GREY, INK, LABEL, NARROW, PAPER, Sheet, Stroke, WIDE},
     },
 };
 
@@ -35,8 +35,8 @@ pub struct ComparisonPlot {
 pub struct ComparisonRow {
     /// Its name.
     pub name: String,
-    /// What stands below the name.
-    pub note: String,
+    /// What stands below the name, line by line.
+    pub notes: Vec<String>,
     /// Source to sink, K/W.
     pub band: Band,
     /// Whether it is the best at nominal.
@@ -51,9 +51,9 @@ const NAMES: f64 = 165.0;
 /// Room for the bands, points.
 const BANDS: f64 = 250.0;
 /// Most a map may take, points.
-const MAP: [f64; 2] = [170.0, 110.0];
+const MAP: [f64; 2] = [160.0, 82.0];
 /// Least height of a row, points.
-const ROW: f64 = 44.0;
+const ROW: f64 = 52.0;
 /// Half of the height of a band, points.
 const HALF: f64 = 7.0;
 /// Between the columns and between the rows, points.
@@ -193,12 +193,15 @@ fn name(sheet: &mut Sheet, row: &ComparisonRow, middle: f64) {
     }
     let small = Lettering::plain(LABEL - 1.5, GREY, Anchor::Start);
     let lines = lettering.wrapped(&row.name, NAMES - 10.0, 2);
-    let mut y = middle - 7.0 * lines.len() as f64 + 4.0;
+    let mut y = middle - 7.0 * (lines.len() + row.notes.len()) as f64 + 11.0;
     for line in lines {
         sheet.text([MARGIN, y], line, lettering);
         y += 14.0;
     }
-    sheet.text([MARGIN, y], small.shortened(&row.note, NAMES - 10.0), small);
+    for note in &row.notes {
+        sheet.text([MARGIN, y], small.shortened(note, NAMES - 10.0), small);
+        y += 13.0;
+    }
 }
 
 fn band(
@@ -232,7 +235,16 @@ fn band(
     let shown = axis::significant(nominal, 4);
     let half = 0.5 * text.width(&shown);
     let x = x.clamp(frame.left + half + 2.0, frame.right - half);
-    sheet.text([x, middle - HALF - 5.0], shown, text);
+    // On paper of its own, so that no line runs through the digits.
+    let baseline = middle - HALF - 5.0;
+    let ground = Frame {
+        left: x - half - 1.5,
+        top: baseline - text.size,
+        right: x + half + 1.5,
+        bottom: baseline + 2.0,
+    };
+    sheet.area(corners(ground), PAPER);
+    sheet.text([x, baseline], shown, text);
     Ok(())
 }
 

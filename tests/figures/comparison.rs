@@ -10,7 +10,10 @@ use crate::{field, furnished};
 pub fn comparison() -> ComparisonPlot {
     let row = |(name, nominal): (&str, f64), best: bool| ComparisonRow {
         name: name.into(),
-        note: "4 bolts, 0.12 kg".into(),
+        notes: vec![
+            "4 bolts, 0.12 kg".into(),
+            "best is better in 97 of 100".into(),
+        ],
         band: Band {
             low: Some(0.8 * nominal),
             nominal,
