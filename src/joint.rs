@@ -176,6 +176,7 @@ fn reading(
     let mut collector = Collector::default();
     let mut tree = Node::file(&table);
     let variants = variants::taken(&mut tree, &mut collector);
+    let formed = collector.count();
     if let Some(variant) = variant.and_then(|variant| variants.get(variant)) {
         variant.apply((&mut tree, text), &mut collector);
     }
@@ -184,7 +185,7 @@ fn reading(
         overrides::apply(&mut tree, set, start, &mut collector);
         start += set.len() + 1;
     }
-    let overridden = collector.count() == 0;
+    let overridden = collector.count() == formed;
     let file = walk::file(&tree, &FILE, &mut collector);
     if let Some(told) = newer_format(&file) {
         return (None, vec![told]);

@@ -279,8 +279,9 @@ fn on_the_cone_the_hole_of_a_lost_bolt_stays() {
     let five = found(&five);
     let [with, without] = [&lost, &five].map(|case| case.results.source_to_sink.resistance.nominal);
     println!("hole {with} no hole {without}");
-    // A hole of 16 mm² in 6000 mm²: hardly more resistance, and the faces less by just that.
-    assert!(with > without && with < 1.01 * without, "{with} {without}");
+    // A hole of 16 mm² in 6000 mm², farthest from the bolts: the heat enters elsewhere, nearer to them,
+    // and the resistance falls by a few parts in a thousand; the faces are less by just the hole.
+    assert!((0.99..1.0).contains(&(with / without)), "{with} {without}");
     let gone = five.footprint - lost.footprint;
     let hole = std::f64::consts::FRAC_PI_4 * 4.5e-3_f64.powi(2);
     assert!((gone / hole - 1.0).abs() < 1e-6, "{gone}");
