@@ -94,8 +94,8 @@ fn odds_are_those_counted_by_hand() {
         PLATES,
         &[
             "service.medium=helium",
-            "service.pressure=\"3 Pa\"",
-            "plate.upper.thickness=\"3.7 mm\"",
+            "service.pressure=\"250 Pa\"",
+            "plate.upper.thickness=\"3 mm\"",
         ],
     );
     let found = compared(&[&vacuum, &gas], Choice::Cone, &OPTIONS);

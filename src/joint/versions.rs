@@ -45,13 +45,16 @@ pub fn read_versions(
         Ok(joint) => versions.push(Version { name: None, joint }),
         Err(faults) => all = faults,
     }
-    for (place, name) in variant_names(text).into_iter().enumerate() {
+    let names = variant_names(text);
+    // A variant with faults without end must not hide those of the others.
+    let share = (MOST_FAULTS / (names.len() + 1)).max(FEWEST_TOLD);
+    for (place, name) in names.into_iter().enumerate() {
         match read_version(text, (sets, Some(place)), files) {
             Ok(joint) => versions.push(Version {
                 name: Some(name),
                 joint,
             }),
-            Err(faults) => add(&mut all, faults, &name),
+            Err(faults) => add(&mut all, faults, (&name, share)),
         }
     }
     if all.faults.is_empty() {
@@ -59,7 +62,6 @@ pub fn read_versions(
     } else {
         all.faults
             .sort_by_key(|(source, fault)| (*source, fault.span.start));
-        all.faults.truncate(MOST_FAULTS);
         Err(all)
     }
 }
@@ -79,8 +81,12 @@ pub fn read_version(
     }
 }
 
-/// Adds what only a variant is at fault with, and says which.
-fn add(all: &mut Faults, faults: Faults, variant: &str) {
+/// Faults that are told of every variant, however many there are.
+const FEWEST_TOLD: usize = 10;
+
+/// Adds what only a variant is at fault with, and says which; no more than its share.
+fn add(all: &mut Faults, faults: Faults, (variant, share): (&str, usize)) {
+    let mut told = 0;
     for (source, fault) in faults.faults {
         let source = &faults.sources[source];
         let place = all.sources.iter().position(|known| known == source);
@@ -94,7 +100,8 @@ fn add(all: &mut Faults, faults: Faults, variant: &str) {
                 && known.span == fault.span
                 && known.message == fault.message
         });
-        if !known {
+        if !known && told < share {
+            told += 1;
             let message = format!("variant `{variant}`: {}", fault.message);
             all.faults.push((place, Fault { message, ..fault }));
         }

@@ -126,7 +126,7 @@ fn every_fault_of_every_variant_is_told_with_its_place() {
     let folder = tempdir().expect("a folder");
     let base = fs::read_to_string(DEMO).expect("the demo is there");
     let text = base
-        .replace("\"1.6 N·m\"\n", "\"2 kg\"\n")
+        .replace("\"1.7 N·m\"\n", "\"2 kg\"\n")
         .replace(
             "plate.carrier.thickness = \"4 mm\"",
             "plate.carier.thickness = \"4 mm\"",
@@ -176,7 +176,7 @@ fn a_variant_can_be_estimated_alone() {
         serde_json::from_str(&stdout(&told)).expect("one object")
     };
     let variant = foot(&["--variant", "more torque"]);
-    let set = foot(&["--set", "fastener.torque.value=\"1.6 N·m\""]);
+    let set = foot(&["--set", "fastener.torque.value=\"1.7 N·m\""]);
     assert_eq!(variant["results"], set["results"]);
     assert_eq!(variant["variant"], "more torque");
     let told = ringsum()
