@@ -37,6 +37,10 @@ const STATED: &str = "as stated";
 /// the choice matters
 #[derive(Debug, Args)]
 #[command(after_help = EXAMPLES)]
+#[expect(
+    clippy::struct_excessive_bools,
+    reason = "each is a flag of its own on the command line"
+)]
 pub struct Compare {
     /// Joint files; - reads standard input
     #[arg(required = true, value_name = "FILE")]

@@ -152,7 +152,7 @@ fn band_axis(plot: &ComparisonPlot) -> Result<Axis, FigureError> {
     })
 }
 
-/// One scale for all pressures, from zero, MPa.
+/// One scale for all pressures, from zero, in their unit.
 fn colour_axis(plot: &ComparisonPlot) -> Result<Axis, FigureError> {
     let mut highest: f64 = 0.0;
     for map in plot.rows.iter().map(|row| &row.pressure) {
