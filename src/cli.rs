@@ -7,9 +7,12 @@ mod compare;
 mod console;
 mod draw;
 mod drawings;
+mod draws;
+mod drivers;
 mod estimate;
 mod explain;
 mod field;
+mod fit;
 mod hidden;
 mod input;
 mod list;
@@ -61,7 +64,9 @@ enum Command {
     Estimate(estimate::Estimate),
     Compare(compare::Compare),
     Torque(torque::Torque),
+    Drivers(drivers::Drivers),
     Draw(draw::Draw),
+    Fit(Box<fit::Fit>),
     List(list::List),
     Explain(explain::Explain),
     #[command(hide = true)]
@@ -114,7 +119,9 @@ impl Command {
             Self::Estimate(command) => command.run(console),
             Self::Compare(command) => command.run(console),
             Self::Torque(command) => command.run(console),
+            Self::Drivers(command) => command.run(console),
             Self::Draw(command) => command.run(console),
+            Self::Fit(command) => command.run(console),
             Self::List(command) => command.run(console),
             Self::Explain(command) => command.run(console),
             Self::Completions(command) => command.run(console),

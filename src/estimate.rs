@@ -9,9 +9,11 @@ mod maps;
 mod results;
 mod surfaces;
 mod temperatures;
+mod torques;
+mod window;
 
 pub(crate) use chain::LARGE_ERROR;
-pub use chain::{Chain, Meeting, State};
+pub use chain::{Chain, DrawPlan, Drawn, Meeting, State, Workspace};
 pub use choice::{Choice, Fineness, Watch};
 pub use forces::Strength;
 pub use loss::{Loss, worst_loss};
@@ -21,12 +23,14 @@ pub use temperatures::{
     FacePoint, HeatMap, SectionBolt, SectionPlate, Solid, StackSection, Temperatures, Through,
     heat_map, stack_section,
 };
+pub use window::*;
 
 pub use crate::resistance::RingRow;
 
 use crate::{
     diagnostic::Assumption,
     joint::{CooledPart, Cooling, Fastener, Joint, NotLeftOut, Sink, Zone},
+    numerics::distribution::deviations,
     pressure,
     resistance::{self, Path},
 };
@@ -52,23 +56,40 @@ pub struct Options {
     pub seed: u64,
 }
 
+/// Place beyond which a bolt and its lot are not told apart when they are mixed: eight standard
+/// deviations, so that the ends themselves mix to an end.
+const MOST_PLACE: f64 = 1.0 - 1e-15;
+
 /// Where every uncertain input of one realisation lies; all zero is the nominal chain.
 ///
-/// Inputs with bounds lie at a place from −1 (low) to +1 (high); inputs with a factor lie at a
-/// number of standard deviations.
-#[derive(Clone, Copy, Debug, Default, PartialEq)]
+/// A place runs from −1 (low) to +1 (high); the quantile of the input is half of the place above −1,
+/// whatever its distribution.
+#[derive(Clone, Debug, Default, PartialEq)]
 pub struct Realisation {
-    /// Friction of all bolts, place.
+    /// Friction of the lot of all bolts, place.
     pub friction: f64,
+    /// Load from outside along the bolts, place.
+    pub load: f64,
     /// Torque tool, place.
     pub tool: f64,
     /// Given preload or scatter of the method, place.
     pub preload: f64,
+    /// What every bolt has for itself of friction and preload, place towards more force, by file
+    /// order; empty where all lie as their lot.
+    pub bolts: Vec<f64>,
+    /// Running torque, place.
+    pub running: f64,
     /// Share of the guide losses that acts when the file asks for none, 0 to 1.
     pub loss: f64,
+    /// Settling that the file asks for, place.
+    pub settling: f64,
+    /// Short-term relaxation that the file asks for, place.
+    pub relaxation: f64,
+    /// Relaxation in the long term, place.
+    pub long_term: f64,
     /// Roughness of the warm and the cold faces, place.
     pub roughness: [f64; 2],
-    /// Slope of the warm and the cold faces, standard deviations.
+    /// Slope of the warm and the cold faces, place.
     pub slope: [f64; 2],
     /// Hardness of all faces, place.
     pub hardness: f64,
@@ -76,19 +97,56 @@ pub struct Realisation {
     pub conductivity: [f64; 2],
     /// Conductivity of the plates between them, place; one for all.
     pub conductivity_between: f64,
-    /// Law of the solid spots or own measurements, standard deviations.
+    /// Law of the solid spots or own measurements, place.
     pub law: f64,
-    /// Filler resistance, standard deviations.
+    /// Filler resistance, place.
     pub filler: f64,
-    /// Gas parameter, standard deviations.
+    /// Gas parameter, place.
     pub gas: f64,
     /// Form of the pressure field and of the spreading model, place.
     pub field: f64,
     /// Out-of-flatness that is stated as a height alone, place: −1 convex, +1 concave.
     pub flatness: f64,
+    /// What the file states with a spread of its own, place, in the order of `Joint::uncertain`;
+    /// what lies beyond the end is nominal.
+    pub stated: Vec<f64>,
+    /// What the grid moves source to sink by, relative to it.
+    pub numerical: f64,
 }
 
 impl Realisation {
+    /// Losses of the clamp force at a place: all of them at +1, the least at −1.
+    pub(crate) fn losing(place: f64) -> Self {
+        Self {
+            loss: place.max(0.0),
+            settling: place,
+            relaxation: place,
+            long_term: place,
+            ..Self::default()
+        }
+    }
+
+    /// Place of a bolt: that of its lot and its own, mixed by their shares in the variance.
+    ///
+    /// ```text
+    /// z = √(1 − s) z_lot + √s z_own,   z = Φ⁻¹((1 + place)/2)
+    /// ```
+    ///
+    /// Every bolt then lies as its distribution says, and any two are correlated by 1 − s in z.
+    /// Checked: `bolts_mix_lot_and_own`.
+    pub(crate) fn of_bolt(&self, lot: f64, (bolt, own): (usize, f64)) -> f64 {
+        match self.bolts.get(bolt) {
+            None => lot,
+            _ if own <= 0.0 => lot,
+            Some(place) if own >= 1.0 => *place,
+            Some(place) => {
+                let ends = |place: f64| deviations(place.clamp(-MOST_PLACE, MOST_PLACE));
+                let mixed = (1.0 - own).sqrt() * ends(lot) + own.sqrt() * ends(*place);
+                libm::erf(mixed * std::f64::consts::FRAC_1_SQRT_2)
+            }
+        }
+    }
+
     /// Place of the conductivity of a plate of a joint.
     pub(crate) fn conductivity_of(&self, joint: &Joint, plate: usize) -> f64 {
         match plate {
@@ -195,13 +253,14 @@ pub fn nominal(chain: &Chain, options: &Options) -> Result<Estimate, Failure> {
     let cases = (0..joint.service.cases.len())
         .map(|case| case_result(chain, case, error))
         .collect::<Result<Vec<CaseResult>, Failure>>()?;
-    let (source_plane, sink_plane) = planes(joint);
+    let (source_plane, sink_plane) = plane_names(joint);
     Ok(Estimate {
         title: joint.title.clone(),
         seed: options.seed,
         draws: options.draws,
         field: chain.field_name(),
         resolution: chain.resolution_name(),
+        bolts_scatter: joint.bolts_scatter.words(),
         source_plane,
         sink_plane,
         heat: joint.service.heat,
@@ -250,6 +309,7 @@ fn case_result(chain: &Chain, case: usize, numerical_error: f64) -> Result<CaseR
     Ok(CaseResult {
         name: named.name,
         sink_temperature: named.temperature,
+        sink_radiates: joint.sink.radiates(),
         bolts,
         pressure,
         interfaces,
@@ -258,7 +318,9 @@ fn case_result(chain: &Chain, case: usize, numerical_error: f64) -> Result<CaseR
         resistance_lower: Some(path.resistance_lower.max(path.perfect_contact)),
         resistance_upper: path.resistance_upper,
         numerical_error,
+        worst: None,
         draw_error: None,
+        sampling: None,
         footprint: chain.footprint(),
         rise: joint.service.heat.map(|heat| Rise {
             source: Band::nominal(heat * path.source_to_sink),
@@ -293,7 +355,7 @@ fn results(path: &Path) -> Results {
 }
 
 /// Names of the planes between which source to sink stands.
-fn planes(joint: &Joint) -> (String, String) {
+pub(crate) fn plane_names(joint: &Joint) -> (String, String) {
     let warm = &joint.warm().name;
     let cold = &joint.cold().name;
     let source = match joint.source.alone().map(|source| source.zone) {
@@ -341,4 +403,29 @@ pub fn group_label(group: &Fastener) -> String {
         "{} {}, {count} {places}",
         group.thread.name, group.grade.name
     )
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn bolts_mix_lot_and_own() {
+        let at = Realisation {
+            bolts: vec![0.5, -0.2],
+            ..Realisation::default()
+        };
+        let near = |found: f64, exact: f64| assert!((found - exact).abs() < 1e-12, "{found}");
+        near(at.of_bolt(0.3, (0, 0.0)), 0.3);
+        near(at.of_bolt(0.3, (1, 1.0)), -0.2);
+        // 2 Φ(√½ Φ⁻¹(0.65) + √½ Φ⁻¹(0.75)) − 1 by SciPy 1.17.1:
+        // 2*norm.cdf(.5**.5*(norm.ppf(.65)+norm.ppf(.75)))-1
+        near(at.of_bolt(0.3, (0, 0.5)), 0.546383241019639);
+        // The ends of both mix to an end.
+        let end = Realisation {
+            bolts: vec![1.0],
+            ..Realisation::default()
+        };
+        assert!(end.of_bolt(1.0, (0, 0.3)) > 1.0 - 1e-12);
+    }
 }

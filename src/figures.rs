@@ -4,6 +4,7 @@ mod axis;
 mod clip;
 mod comparison;
 mod cumulative;
+mod fit;
 mod flags;
 mod fonts;
 mod legend;
@@ -14,18 +15,20 @@ mod plan;
 mod ramp;
 mod section;
 mod sheet;
+mod tornado;
 mod torque;
 mod warmth;
 
 pub use comparison::{ComparisonPlot, ComparisonRow};
 pub use cumulative::{CumulativePlot, Curve, RadiusMark};
+pub use fit::{FitPlot, ProfilePlot};
 pub use plan::{
     DetailKind, FacePair, PlanBolt, PlanDetail, PlanMap, PlanOutline, PlanPair, PlanShape, Scale,
 };
 pub use ramp::Ramp;
 pub use section::SectionPlot;
 
-use crate::estimate::TorqueSweep;
+use crate::{estimate::TorqueSweep, uncertainty::Ranking};
 
 /// The file a drawing becomes.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -53,6 +56,12 @@ pub enum Drawing {
     Torque(TorqueSweep),
     /// Several joints side by side.
     Comparison(Box<ComparisonPlot>),
+    /// What each input alone does to an answer.
+    Tornado(Box<Ranking>),
+    /// Own readings with the law through them.
+    Fit(Box<FitPlot>),
+    /// Likelihood of an unknown over its range.
+    Profile(Box<ProfilePlot>),
 }
 
 /// Why a drawing cannot be made.
@@ -99,6 +108,9 @@ fn sheet(drawing: &Drawing) -> Result<sheet::Sheet, FigureError> {
         Drawing::Cumulative(plot) => cumulative::draw(plot),
         Drawing::Torque(sweep) => torque::draw(sweep),
         Drawing::Comparison(plot) => comparison::draw(plot),
+        Drawing::Tornado(ranking) => tornado::draw(ranking),
+        Drawing::Fit(plot) => fit::draw(plot),
+        Drawing::Profile(plot) => fit::draw_profile(plot),
     }
 }
 

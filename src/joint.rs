@@ -22,6 +22,8 @@ mod heating;
 mod inserts;
 mod isolating;
 mod lands;
+mod limits;
+mod loads;
 mod maps;
 mod mass;
 mod materials;
@@ -44,9 +46,11 @@ mod symmetry;
 mod syntax;
 mod tightening;
 mod tree;
+mod uncertainty;
 mod variants;
 mod versions;
 mod walk;
+mod zones;
 
 use toml::de::DeTable;
 
@@ -246,12 +250,18 @@ fn assembled(file: &Record, tables: &mut Tables<'_>, collector: &mut Collector) 
         fasteners::read_alone(file, collector);
         return None;
     };
+    limits::plates(&plates, collector);
     let source = heating::read(&plates[0], collector);
     let sink = cooling::read(&plates[plates.len() - 1], collector);
     sandwich::cooled(&plates[plates.len() - 1], sink.as_ref(), collector);
     let contact = contact::read(file, &plates, collector);
     let fasteners = fasteners::read(file, (&plates, &own), collector);
+    if let Some(fasteners) = &fasteners {
+        limits::seats(file, fasteners, collector);
+    }
     let losses = contact::losses(file, collector);
+    let bolts_scatter = uncertainty::bolts(file, collector);
+    let names: Vec<String> = plates.iter().map(|plate| plate.name.clone()).collect();
     let plates: Option<Vec<Plate>> = plates
         .into_iter()
         .map(plates::PlateDraft::finished)
@@ -269,9 +279,13 @@ fn assembled(file: &Record, tables: &mut Tables<'_>, collector: &mut Collector) 
         losses: losses?,
         cost: file.number("cost"),
         missing: Vec::new(),
+        uncertain: uncertainty::stated(file, &names),
+        bolts_scatter: bolts_scatter?,
         assumptions: Vec::new(),
     };
     cold::check(&joint, file, collector);
+    loads::check(&joint, file, collector);
+    zones::check(&joint, file, collector);
     Some(joint)
 }
 

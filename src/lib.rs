@@ -24,6 +24,8 @@ pub mod estimate;
 
 pub mod uncertainty;
 
+pub mod fit;
+
 pub mod report;
 
 pub mod figures;

@@ -18,6 +18,7 @@ const ORDER: &[&str] = &[
     "resistance",
     "estimate",
     "uncertainty",
+    "fit",
     "layout",
     "report",
     "figures",

@@ -2,6 +2,8 @@
 
 #[path = "cautions/elastic.rs"]
 mod elastic;
+#[path = "cautions/strength.rs"]
+mod strength;
 
 use std::{
     collections::BTreeSet,

@@ -4,6 +4,8 @@
 mod batch;
 #[path = "cli/compare.rs"]
 mod compare;
+#[path = "cli/drivers.rs"]
+mod drivers;
 #[path = "cli/fields.rs"]
 mod fields;
 #[path = "cli/tables.rs"]
@@ -68,7 +70,8 @@ ringsum --help                 lists every command
 fn help_lists_the_commands_and_hides_those_for_packagers() {
     let help = stdout(&ringsum().arg("--help").assert().code(0).stderr_eq(""));
     for command in [
-        "new", "check", "estimate", "compare", "torque", "draw", "list", "explain",
+        "new", "check", "estimate", "compare", "torque", "drivers", "draw", "fit", "list",
+        "explain",
     ] {
         assert!(
             help.contains(&format!("\n  {command}")),
@@ -92,7 +95,9 @@ fn every_command_has_help_and_usage_errors_go_to_standard_error() {
         "estimate",
         "compare",
         "torque",
+        "drivers",
         "draw",
+        "fit",
         "list",
         "explain",
         "completions",
@@ -111,7 +116,9 @@ fn every_command_has_help_and_usage_errors_go_to_standard_error() {
             .stdout_eq("");
         assert!(stderr(&wrong).contains("--nonsense"));
     }
-    for command in ["check", "estimate", "compare", "torque", "draw"] {
+    for command in [
+        "check", "estimate", "compare", "torque", "drivers", "draw", "fit",
+    ] {
         ringsum().arg(command).assert().code(2).stdout_eq("");
     }
 }
@@ -134,7 +141,7 @@ fn the_version_is_that_of_the_package() {
 #[test]
 fn a_missing_file_is_named_with_the_way_on() {
     let folder = tempdir().unwrap();
-    for command in ["check", "estimate", "torque"] {
+    for command in ["check", "estimate", "torque", "drivers"] {
         let missing = within(&folder)
             .args([command, "nowhere.toml"])
             .assert()
@@ -455,7 +462,7 @@ fn a_reader_that_leaves_early_is_no_failure_and_a_full_disk_is_one() {
 fn arguments_that_are_no_text_do_not_bring_it_down() {
     use std::{ffi::OsStr, os::unix::ffi::OsStrExt};
     let odd = OsStr::from_bytes(b"\xFF\xFE.toml");
-    for command in ["check", "estimate", "torque"] {
+    for command in ["check", "estimate", "torque", "drivers"] {
         ringsum()
             .arg(command)
             .arg(odd)

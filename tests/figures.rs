@@ -4,13 +4,20 @@
 mod comparison;
 #[path = "figures/heat.rs"]
 mod heat;
+#[path = "figures/tornado.rs"]
+mod tornado;
+
+use std::fmt::Write;
 
 use ringsum::{
-    estimate::{Band, FieldMap, TorquePoint, TorqueSweep},
-    figures::{
-        CumulativePlot, Curve, DetailKind, Drawing, FigureError, Format, PlanBolt, PlanDetail,
-        PlanMap, PlanOutline, PlanPair, PlanShape, RadiusMark, png, render, svg,
+    estimate::{
+        Band, End, FieldMap, Range, Side, TorqueLimit, TorquePoint, TorqueSweep, TorqueWindow,
     },
+    figures::{
+        CumulativePlot, Curve, DetailKind, Drawing, FigureError, FitPlot, Format, PlanBolt,
+        PlanDetail, PlanMap, PlanOutline, PlanPair, PlanShape, RadiusMark, png, render, svg,
+    },
+    fit::{Readings, Series, series::Form},
     joint::Limit,
 };
 
@@ -154,6 +161,8 @@ fn sweep() -> TorqueSweep {
         stated: 2.2,
         largest: Some((2.9, "yield of the bolt")),
         best: Some(2.8),
+        at_stated: 0.165,
+        at_limit: None,
         minimum: None,
         points: (1..=16)
             .map(|k| {
@@ -170,7 +179,63 @@ fn sweep() -> TorqueSweep {
             })
             .collect(),
         required: Some((0.8, Limit::Most)),
+        window: TorqueWindow {
+            confidence: Some(0.9),
+            knee: Some(1.4),
+            limits: vec![
+                TorqueLimit {
+                    name: "separation",
+                    torque: 0.6,
+                    side: Side::Least,
+                },
+                TorqueLimit {
+                    name: "yield of the bolt",
+                    torque: 2.9,
+                    side: Side::Most,
+                },
+                TorqueLimit {
+                    name: "proof load",
+                    torque: 3.6,
+                    side: Side::Most,
+                },
+            ],
+            strength: None,
+            heat: Some(Vec::new()),
+            both: Some(Range {
+                low: End {
+                    torque: 1.1,
+                    by: "the requirement",
+                },
+                high: End {
+                    torque: 2.9,
+                    by: "yield of the bolt",
+                },
+            }),
+            trusted: true,
+            plates_fail: false,
+            force_ratio: None,
+            larger_thread: None,
+            trials: Vec::new(),
+        },
         cautions: Vec::new(),
+    }
+}
+
+/// Readings with a law, bands, error bars, two branches and one that stands apart.
+fn fitted() -> FitPlot {
+    let mut text = String::from("p [MPa], h [W/(m²·K)], sigma [%], direction\n");
+    for at in 1..9 {
+        let apart = if at == 5 { 1.9 } else { 1.0 };
+        for (direction, exponent) in [("loading", 0.9), ("unloading", 0.6)] {
+            let h =
+                9000.0 * apart * f64::from(at).powf(exponent) * (1.0 + 0.01 * f64::from(at % 3));
+            writeln!(text, "{at}, {h}, 2, {direction}").expect("a text takes it");
+        }
+    }
+    let readings = Readings::read(&text).expect("a table");
+    FitPlot {
+        title: "Rig".into(),
+        series: Series::of(&readings, Form::Law).expect("two laws"),
     }
 }
 
@@ -181,6 +246,7 @@ fn every_drawing() -> Vec<Drawing> {
         Drawing::Cumulative(cumulative(1)),
         Drawing::Cumulative(cumulative(5)),
         Drawing::Torque(sweep()),
+        Drawing::Fit(Box::new(fitted())),
         Drawing::PressureAndGap(Box::new(pair())),
         Drawing::Plan(furnished(
             PlanMap::gap("Box on panel", &solved()).expect("a solved field knows its gap"),
@@ -189,6 +255,7 @@ fn every_drawing() -> Vec<Drawing> {
         Drawing::Faces(Box::new(heat::faces(Some(22.0)))),
         Drawing::Section(Box::new(heat::section(Some(22.0)))),
         Drawing::Comparison(Box::new(comparison::comparison())),
+        Drawing::Tornado(Box::new(tornado::ranking())),
     ]
 }
 
@@ -473,6 +540,12 @@ fn hostile_titles_stay_text() {
                 sweep.title = HOSTILE.into();
                 sweep.group = "x".repeat(5000);
             }
+            Drawing::Tornado(ranking) => {
+                ranking.title = HOSTILE.repeat(40);
+                ranking.inputs[0].input = HOSTILE;
+            }
+            Drawing::Fit(plot) => plot.title = HOSTILE.repeat(40),
+            Drawing::Profile(plot) => plot.answer.title = HOSTILE.repeat(40),
         }
         let document = svg(&drawing).unwrap();
         texts(&document);

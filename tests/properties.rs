@@ -173,6 +173,7 @@ fn best_torque_is_the_last_that_strength_allows() {
         from: None,
         to: None,
         steps: 9,
+        confidence: 0.9,
         chain: Options { draws: 0, seed: 1 },
     };
     let sweep = torque_sweep(&converter_box(), &options).expect("a sweep");

@@ -6,6 +6,8 @@ mod advice;
 mod fillers;
 #[path = "reader/heat.rs"]
 mod heat;
+#[path = "reader/loads.rs"]
+mod loads;
 #[path = "reader/plates.rs"]
 mod plates;
 #[path = "reader/sandwich.rs"]
@@ -338,11 +340,7 @@ fn a_single_friction_value_is_widened_and_said_so() {
 
 #[test]
 fn a_preload_may_be_a_range_in_three_ways() {
-    let expected = Tightening::Preload(Bounds {
-        low: 4e3,
-        nominal: 5e3,
-        high: 6e3,
-    });
+    let expected = Tightening::Preload(Bounds::uniform([4e3, 5e3, 6e3]));
     for preload in [
         "[\"4 kN\", \"6 kN\"]",
         "[\"4 kN\", \"5 kN\", \"6 kN\"]",

@@ -6,15 +6,17 @@ mod solved;
 use ringsum::{
     diagnostic::{Assumption, Caution},
     estimate::{
-        Band, BoltResult, CaseResult, ConeBeside, Driver, Estimate, Flatness, InterfaceResult, Met,
-        PlaneResult, PressureResult, RequirementResult, Results, RingRow, Rise, SolvedField,
-        SolverHealth, TorquePoint, TorqueSweep,
+        Band, BoltResult, CaseResult, ConeBeside, Driver, End, Estimate, Flatness, InterfaceResult,
+        Met, PlaneResult, PressureResult, Range, RequirementResult, Results, RingRow, Rise, Side,
+        SolvedField, SolverHealth, TorqueLimit, TorquePoint, TorqueSweep, TorqueWindow, Trial,
+        Worst,
     },
     joint::{Limit, Plane, RequirementKind},
     report::{
         catalogue, json, sweep,
         text::{self, Detail, WIDTH},
     },
+    uncertainty::{LAST, REQUIREMENT},
 };
 use serde_json::{Value, json};
 
@@ -53,6 +55,8 @@ fn case(name: &'static str, sink_temperature: f64) -> CaseResult {
         force: band(2100.0, 2510.4, 3020.0),
         force_in_service: band(1800.0, 2400.0, 2950.0),
         strength_use: Some([0.612, 0.755]),
+        axial: None,
+        use_in_service: Some(0.7),
         largest_torque: Some(2.04),
         contact_radius: 0.0071,
         contact_conductance: 31.25,
@@ -60,6 +64,7 @@ fn case(name: &'static str, sink_temperature: f64) -> CaseResult {
     CaseResult {
         name,
         sink_temperature,
+        sink_radiates: false,
         bolts: vec![bolt; 6],
         interfaces: vec![interface()],
         pressure: PressureResult {
@@ -81,7 +86,14 @@ fn case(name: &'static str, sink_temperature: f64) -> CaseResult {
         resistance_lower: Some(0.11),
         resistance_upper: None,
         numerical_error: 0.0042,
+        worst: Some(Worst {
+            contact: [0.003, 0.02],
+            node_to_node: [0.14, 0.21],
+            added_by_joint: [0.11, 0.19],
+            source_to_sink: [0.18, 0.52],
+        }),
         draw_error: None,
+        sampling: None,
         footprint: 0.0192,
         rise: Some(Rise {
             source: band(4.4, 5.5, 8.8),
@@ -119,6 +131,7 @@ fn estimate() -> Estimate {
         draws: 1024,
         field: "cone",
         resolution: "normal",
+        bolts_scatter: "one lot, all alike".to_owned(),
         source_plane: "mean of the heated zone on base".to_owned(),
         sink_plane: "mean of the back of panel".to_owned(),
         heat: Some(22.0),
@@ -659,11 +672,107 @@ fn torque_sweep() -> TorqueSweep {
         stated: 1.7,
         largest: Some((2.04, "yield of the bolt")),
         best: Some(1.0),
+        at_stated: 0.11,
+        at_limit: None,
         minimum: None,
         points: vec![point(1.0, 0.1), point(1.6, 0.11), point(2.2, 0.12)],
         required: Some((0.115, Limit::Most)),
+        window: window(),
         cautions: Vec::new(),
     }
+}
+
+/// Separation at 0.4, knee at 1.2, the requirement met from 0.9, strength to 2.04 N·m.
+fn window() -> TorqueWindow {
+    let end = |torque: f64, by: &'static str| End { torque, by };
+    let limit = |name: &'static str, torque: f64, side: Side| TorqueLimit { name, torque, side };
+    let strength = Range {
+        low: end(0.4, "separation"),
+        high: end(2.04, "yield of the bolt"),
+    };
+    let heat = Range {
+        low: end(0.9, REQUIREMENT),
+        high: end(2.2, LAST),
+    };
+    TorqueWindow {
+        confidence: Some(0.9),
+        knee: Some(1.2),
+        limits: vec![
+            limit("separation", 0.4, Side::Least),
+            limit("yield of the bolt", 2.04, Side::Most),
+            limit("proof load", 2.5, Side::Most),
+        ],
+        strength: Some(strength),
+        heat: Some(vec![heat]),
+        both: heat.shared(strength),
+        trusted: true,
+        plates_fail: false,
+        force_ratio: None,
+        larger_thread: None,
+        trials: Vec::new(),
+    }
+}
+
+#[test]
+fn the_window_is_told_plainly_with_what_ends_it() {
+    let report = sweep::torque(&torque_sweep());
+    assert!(
+        report.contains(
+            "window   0.9000 to 2.040 N·m: heat and strength are both met at 90 % confidence; from the"
+        ),
+        "{report}"
+    );
+    // Limits stand between the rows, torque rising.
+    let place = |words: &str| {
+        report
+            .find(words)
+            .unwrap_or_else(|| panic!("{words}\n{report}"))
+    };
+    assert!(place("– separation") < place("– the requirement is met from here"));
+    assert!(place("– knee") > place("\n1.000"));
+    assert!(place("– yield of the bolt") < place("\n2.200"));
+    assert!(place("– proof load") > place("\n2.200"));
+}
+
+#[test]
+fn a_shut_window_names_the_limits_and_what_opens_it() {
+    let mut sweep = torque_sweep();
+    let end = |torque: f64, by: &'static str| End { torque, by };
+    let heat = Range {
+        low: end(2.1, REQUIREMENT),
+        high: end(2.2, LAST),
+    };
+    sweep.window.heat = Some(vec![heat]);
+    sweep.window.both = None;
+    sweep.window.force_ratio = Some(1.04);
+    sweep.window.larger_thread = Some("M5".to_owned());
+    sweep.window.trials = vec![
+        Trial {
+            change: "grade A2-80".to_owned(),
+            window: Some(Range {
+                low: end(2.1, REQUIREMENT),
+                high: end(2.2, LAST),
+            }),
+        },
+        Trial {
+            change: "a tool of ± 2 %".to_owned(),
+            window: None,
+        },
+    ];
+    let report = sweep::torque(&sweep);
+    for words in [
+        "window   none: heat asks for at least 2.100 N·m, and yield of the bolt ends at 2.040 N·m",
+        "opened by grade A2-80: 2.100 to 2.200 N·m",
+        "tried alone and not enough: a tool of ± 2 %",
+        "1.0 times the force",
+        "(M5 of the same grade",
+    ] {
+        assert!(report.contains(words), "{words}\n{report}");
+    }
+    assert!(
+        report.lines().all(|line| line.chars().count() <= WIDTH),
+        "{report}"
+    );
 }
 
 #[test]

@@ -1,9 +1,9 @@
 //! Heat at the edge of contact: columns against the round solver on one bolt in round plates.
 //!
 //! Nearly all heat of a bare joint in vacuum enters within k/h of the edge of contact, here 0.8 mm, about one
-//! cell of `normal`. So the columns read too little, by an amount that falls with the square of the spacing.
-//! This file says how much, and that the heat near the edge is to blame: neither the contact's pressure, nor
-//! the disc cut out of square cells, nor the sum of the local conductances.
+//! cell of `normal`. Pressures that are means over a column's surroundings reach too far out and read too
+//! little; pressures at the columns themselves (`nodal`) leave less than half of that. This file says how
+//! much, and that neither the disc cut out of square cells nor the sum of the local conductances is off.
 
 use std::sync::Arc;
 
@@ -14,7 +14,7 @@ use ringsum::{
         Annulus, Body, Bolt, Compliance, End, Faces, Field, Fineness, Head, Interface, Layer,
         Problem, solve,
     },
-    resistance::columns::{Conductivity, Sink, Source, Stack, Terminals, Zone, solve_both},
+    resistance::columns::{Conductivity, Sink, Source, Stack, Terminals, Zone, nodal, solve_both},
 };
 
 const MEMORY: u64 = 4_000_000_000;
@@ -113,17 +113,24 @@ fn columns_approach_the_round_solution_at_the_edge_of_contact() {
         bolts: Vec::new(),
     };
     let conductivity = [Conductivity::isotropic(167.0); 2];
-    let mut before = f64::INFINITY;
-    // Measured −8.7, −4.1, −2.2 and −1.2 %, with the round pressure −6.7, −3.5, −1.9 and −1.0 %.
+    // Measured −3.2, −1.4, −0.03 and −0.7 %; with the means of the contact as they come −8.7, −3.2, −2.2 and
+    // −1.2 %, with means of the round pressure −6.7, −2.6, −1.9 and −1.0 %. Where the edge falls between two
+    // lines moves it by half a per cent.
     for (fineness, bar) in [
-        (Fineness::Coarse, 0.10),
-        (Fineness::Fast, 0.05),
-        (Fineness::Normal, 0.027),
-        (Fineness::Fine, 0.015),
+        (Fineness::Coarse, 0.04),
+        (Fineness::Fast, 0.02),
+        (Fineness::Normal, 0.01),
+        (Fineness::Fine, 0.01),
     ] {
         let field = on_columns(fineness);
         let stack = Arc::new(Stack::of(&field.mesh).expect("the mesh fits"));
-        let own: Vec<f64> = field.faces[0].pressure.iter().map(|p| solid(*p)).collect();
+        let face = &field.faces[0];
+        let pressures = nodal(
+            &field.mesh.plan,
+            &field.mesh.faces[0].contact,
+            &face.pressure,
+        );
+        let own: Vec<f64> = pressures.iter().map(|p| solid(*p)).collect();
         let theirs = as_means(&field, (&chain, &state));
         let [own, theirs] = [own, theirs].map(|local| {
             let weights = &field.faces[0].weight;
@@ -143,12 +150,11 @@ fn columns_approach_the_round_solution_at_the_edge_of_contact() {
             100.0 * own,
             100.0 * theirs
         );
+        assert!(own.abs() < bar, "{fineness:?} {own:+.4}");
+        // The right pressure as means does worse than the own one at the columns: the means are to blame.
         assert!(
-            own < 0.0 && -own < bar && -own < 0.7 * before,
-            "{fineness:?} {own:+.4}"
+            own.abs() < theirs.abs() && theirs < 0.0,
+            "{fineness:?} {own:+.4} {theirs:+.4}"
         );
-        // Three fourths and more of it are left under the right pressure.
-        assert!(theirs / own > 0.7, "{fineness:?} {own:+.4} {theirs:+.4}");
-        before = -own;
     }
 }

@@ -265,7 +265,8 @@ fn scatter_of_one_interface_moves_its_own_share() {
         let joint = read(&walled(scatter));
         let chain = chain(&joint);
         let at = Realisation {
-            filler: 1.0,
+            // One standard deviation: 2 Φ(1) − 1.
+            filler: 0.682_689_492_137_085_9,
             ..Realisation::default()
         };
         let moved = chain.state(0, &at).expect("a state").path.source_to_sink;

@@ -21,7 +21,7 @@ fn chain(joint: &Joint) -> Chain<'_> {
 }
 
 fn drawn(chain: &Chain) -> (HeatMap, StackSection) {
-    let map = heat_map(chain, 200).expect("a state").expect("a map");
+    let map = heat_map(chain, 0, 200).expect("a state").expect("a map");
     let section = stack_section(chain).expect("a state").expect("a section");
     (map, section)
 }
@@ -109,7 +109,7 @@ fn a_section_agrees_with_the_faces_and_stays_below_the_hottest_point() {
 fn the_cone_solves_no_temperatures() {
     let joint = joint("case_i");
     let chain = Chain::new(&joint).expect("a chain");
-    assert_eq!(heat_map(&chain, 50), Ok(None));
+    assert_eq!(heat_map(&chain, 0, 50), Ok(None));
     assert_eq!(stack_section(&chain), Ok(None));
     assert_eq!(chain.temperatures(0), Ok(None));
 }

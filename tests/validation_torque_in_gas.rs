@@ -105,6 +105,7 @@ fn swept(medium: &str, [from, to]: [f64; 2]) -> TorqueSweep {
         from: Some(from),
         to: Some(to),
         steps: 4,
+        confidence: 0.9,
         chain: Options { draws: 0, seed: 1 },
     };
     sweep_along(&chain(&joint), &options).expect("a sweep")

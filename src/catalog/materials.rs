@@ -199,6 +199,7 @@ fn checked(
         density: values.maybe(raw.density.as_ref(), 1.0)?,
         hardness: hardness(raw, &values)?,
         microhardness: microhardness(raw, sources)?,
+        microhardness_spread: None,
         yield_strength: values.maybe(raw.yield_strength.as_ref(), 1e6)?,
         bearing_limit: values.maybe(raw.bearing_limit.as_ref(), 1e6)?,
         note: raw.note.clone(),

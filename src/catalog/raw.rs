@@ -4,7 +4,10 @@ use std::collections::BTreeMap;
 
 use serde::{Deserialize, de::DeserializeOwned};
 
-use crate::catalog::records::{Datum, Status};
+use crate::{
+    catalog::records::{Datum, Status},
+    numerics::distribution::Shape,
+};
 
 /// Why a catalogue file is refused.
 #[derive(Clone, Debug, PartialEq, thiserror::Error)]
@@ -127,6 +130,7 @@ impl Values<'_> {
         Ok(Datum {
             value: raw.value * unit,
             range: raw.range.map(|range| range.map(|end| end * unit)),
+            shape: Shape::Uniform,
             status: raw.status.into(),
             source: self.sources.name(&raw.source, raw.of.as_deref())?,
         })

@@ -1,5 +1,7 @@
 //! The records of the catalogue, in SI.
 
+use crate::numerics::distribution::Shape;
+
 /// Where a value comes from and how far it may be trusted.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
 pub enum Status {
@@ -22,6 +24,8 @@ pub struct Datum {
     pub value: f64,
     /// Lowest and highest value met, SI, where known.
     pub range: Option<[f64; 2]>,
+    /// How the weight lies in that range.
+    pub shape: Shape,
     /// How far it may be trusted.
     pub status: Status,
     /// Source key or sentence.
@@ -72,6 +76,8 @@ pub struct Material {
     pub hardness: Option<Datum>,
     /// Vickers microhardness c₁ (Pa) and c₂ of `Hv = c₁ (d_v / 1 µm)^c₂`.
     pub microhardness: Option<[f64; 2]>,
+    /// Spread of c₁, Pa, where a joint file states one.
+    pub microhardness_spread: Option<Datum>,
     /// Yield strength, Pa.
     pub yield_strength: Option<Datum>,
     /// Permissible pressure under a bolt head, Pa.
@@ -282,6 +288,8 @@ pub struct FillerRecord {
     pub thinnest: Option<Datum>,
     /// Modulus of a layer under pressure over its whole face, Pa.
     pub modulus: Option<Datum>,
+    /// Hardness of a foil that yields under asperities, Pa.
+    pub hardness: Option<Datum>,
     /// (pressure, Pa; area resistance, m² K/W).
     pub points: Vec<(f64, f64)>,
     /// Whether it creeps so that bolts need tightening again.

@@ -12,7 +12,9 @@ use crate::{
     figures::{self, Drawing, Format},
     joint::{Joint, Medium},
     pressure::elastic::Failure as Contact,
-    uncertainty::{self, Comparison, Contender, InMedium, SweepOptions},
+    uncertainty::{
+        self, Comparison, Contender, InMedium, Ranking, RankingOptions, SweepOptions, Verification,
+    },
     units::{self, Quantity},
 };
 
@@ -48,11 +50,32 @@ pub fn torque_sweep(task: &Task, options: &SweepOptions) -> Result<TorqueSweep, 
     task.watched(|| uncertainty::sweep_along(&chain, options))
 }
 
+/// The inputs of the worst case ranked by their share in the spread of one answer.
+pub fn ranking(task: &Task, options: &RankingOptions) -> Result<Ranking, Trouble> {
+    let chain = task.chain()?;
+    task.watched(|| uncertainty::ranking(&chain, options))
+}
+
+/// An interface from the command line: its index, from 1 as it is counted there.
+pub fn interface(joint: &Joint, asked: usize) -> Result<usize, Trouble> {
+    let known = joint.interfaces();
+    if (1..=known).contains(&asked) {
+        return Ok(asked - 1);
+    }
+    let names: Vec<String> = (0..known)
+        .map(|index| format!("{} {}", index + 1, joint.interface_name(index)))
+        .collect();
+    Err(Trouble::usage(
+        format!("there is no interface {asked}; the joint has {known}"),
+        format!("count from the warm side: {}", names.join(", ")),
+    ))
+}
+
 /// Whether the rings of every bolt are asked for.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub enum Rings {
-    /// They are.
-    Told,
+    /// They are, in an interface counted from 0.
+    Told(usize),
     /// They are not.
     Left,
 }
@@ -66,23 +89,37 @@ pub struct Estimated {
     pub rings: Vec<Vec<RingRow>>,
     /// The same joint in other media; empty unless asked for.
     pub media: Vec<InMedium>,
+    /// Draws of the first case solved beside the surfaces they are read from; none unless asked for,
+    /// and on the cone.
+    pub verified: Option<Verification>,
 }
 
-/// Low, nominal and high of a joint, with rings and media as asked for.
-pub fn estimate(
-    task: &Task,
-    options: &Options,
-    (rings, media): (Rings, &[Medium]),
-) -> Result<Estimated, Trouble> {
+/// What is asked for beside the estimate.
+#[derive(Clone, Copy, Debug)]
+pub struct Beside<'a> {
+    /// Rings of every bolt.
+    pub rings: Rings,
+    /// Other media.
+    pub media: &'a [Medium],
+    /// Draws to be solved.
+    pub verify: u32,
+}
+
+/// Low, nominal and high of a joint, with what is asked for beside them.
+pub fn estimate(task: &Task, options: &Options, beside: &Beside) -> Result<Estimated, Trouble> {
     let chain = task.chain()?;
     task.watched(|| {
         Ok(Estimated {
             estimate: uncertainty::along(&chain, options)?,
-            rings: match rings {
-                Rings::Told => estimate::ring_tables(&chain)?,
+            rings: match beside.rings {
+                Rings::Told(interface) => estimate::ring_tables(&chain, interface)?,
                 Rings::Left => Vec::new(),
             },
-            media: uncertainty::in_media(&chain, media, options)?,
+            media: uncertainty::in_media(&chain, beside.media, options)?,
+            verified: match beside.verify {
+                0 => None,
+                draws => uncertainty::verification(&chain, 0, &Options { draws, ..*options })?,
+            },
         })
     })
 }
@@ -140,7 +177,7 @@ pub fn compared(
             Losses::Left => None,
         };
         if let Some(columns) = columns {
-            maps.push(estimate::field_map(chain, columns).map_err(failed(entry))?);
+            maps.push(estimate::field_map(chain, 0, columns).map_err(failed(entry))?);
         }
         contenders.push(Contender {
             name: entry.name.clone(),
@@ -159,6 +196,14 @@ pub fn medium(word: &str) -> Result<String, String> {
     Medium::named(word, None).map(|medium| medium.word())
 }
 
+/// The first medium that stands twice in a list of words as [`medium`] gives them.
+pub fn twice(words: &[String]) -> Option<&String> {
+    let before = |index: usize| words[..index].contains(&words[index]);
+    (0..words.len())
+        .find(|index| before(*index))
+        .map(|index| &words[index])
+}
+
 /// Media by their words, gases at the pressure of the joint's own gas where it has one.
 pub fn media(joint: &Joint, words: &[String]) -> Vec<Medium> {
     let pressure = joint.service.medium.pressure();
@@ -171,6 +216,8 @@ pub fn media(joint: &Joint, words: &[String]) -> Vec<Medium> {
 pub struct Fields {
     /// Nominal results.
     pub nominal: Estimate,
+    /// Which interface is shown, counted from 0 at the warm side.
+    pub interface: usize,
     /// Pressure, gap and conductance over the plan.
     pub map: FieldMap,
     /// Rings of every bolt.
@@ -181,15 +228,16 @@ pub struct Fields {
     pub section: Option<StackSection>,
 }
 
-/// What the figures show, maps `columns` points wide.
-pub fn fields(task: &Task, columns: usize) -> Result<Fields, Trouble> {
+/// What the figures show of an interface, maps `columns` points wide.
+pub fn fields(task: &Task, interface: usize, columns: usize) -> Result<Fields, Trouble> {
     let chain = task.chain()?;
     task.watched(|| {
         Ok(Fields {
             nominal: uncertainty::along(&chain, &Options { draws: 0, seed: 1 })?,
-            map: estimate::field_map(&chain, columns)?,
-            rings: estimate::ring_tables(&chain)?,
-            heat: estimate::heat_map(&chain, columns)?,
+            map: estimate::field_map(&chain, interface, columns)?,
+            interface,
+            rings: estimate::ring_tables(&chain, interface)?,
+            heat: estimate::heat_map(&chain, interface, columns)?,
             section: estimate::stack_section(&chain)?,
         })
     })
@@ -230,6 +278,23 @@ pub fn torque(text: &str) -> Result<f64, String> {
         None => fault.message,
     })
 }
+
+/// A share of the draws from the command line, 1.
+pub fn confidence(text: &str) -> Result<f64, String> {
+    let share = units::parse(text, Quantity::Ratio).map_err(|fault| match fault.help {
+        Some(help) => format!("{}; {help}", fault.message),
+        None => fault.message,
+    })?;
+    if (LEAST_SHARE..=MOST_SHARE).contains(&share) {
+        Ok(share)
+    } else {
+        Err("it must lie between 10 % and 99 %, for example \"90 %\"".to_owned())
+    }
+}
+
+/// Least and most share of the draws that a band may hold: the draws tell no more.
+const LEAST_SHARE: f64 = 0.1;
+const MOST_SHARE: f64 = 0.99;
 
 /// The name that was probably meant.
 pub fn nearest(name: &str, known: &[String]) -> Option<String> {

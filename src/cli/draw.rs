@@ -40,6 +40,9 @@ pub struct Draw {
         hide_possible_values = true
     )]
     format: Formats,
+    /// Interface that the maps show, counted from 1 at the warm side
+    #[arg(long, value_name = "N", default_value_t = 1)]
+    interface: usize,
     #[command(flatten)]
     field: Field,
     /// Override a field: --set 'plate.box.thickness="6 mm"'
@@ -90,7 +93,8 @@ impl Draw {
             choice: self.field.choice()?,
             watch: field::watch(),
         };
-        let fields = chain::fields(&task, COLUMNS)?;
+        let interface = chain::interface(&joint, self.interface)?;
+        let fields = chain::fields(&task, interface, COLUMNS)?;
         let mut files = Vec::new();
         for (name, drawing) in drawings::of_joint(&joint, &fields) {
             for format in formats {

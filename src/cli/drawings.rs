@@ -34,7 +34,7 @@ pub const NAMES: [&str; 7] = [
 pub fn of_joint(joint: &Joint, fields: &Fields) -> Vec<(&'static str, Drawing)> {
     let (nominal, field) = (&fields.nominal, &fields.map);
     let furnish = |map: PlanMap| furnished(map, joint, (nominal, field));
-    let title = title(joint);
+    let title = title(joint, fields.interface);
     let pressure = match PlanPair::of(&title, field) {
         Some(pair) => (
             PRESSURE_AND_GAP,
@@ -46,6 +46,7 @@ pub fn of_joint(joint: &Joint, fields: &Fields) -> Vec<(&'static str, Drawing)> 
         ),
     };
     let conductance = Drawing::Plan(furnish(PlanMap::conductance(&title, field)));
+    let heading = title.clone();
     let cumulative = Drawing::Cumulative(CumulativePlot {
         title,
         curves: curves(&fields.rings),
@@ -58,10 +59,12 @@ pub fn of_joint(joint: &Joint, fields: &Fields) -> Vec<(&'static str, Drawing)> 
     ];
     let heat = joint.service.heat;
     if let Some(map) = &fields.heat {
-        let flux = furnish(PlanMap::flux(&joint.title, (field, map)));
+        let flux = furnish(PlanMap::flux(&heading, (field, map)));
         drawings.push((FLUX, Drawing::Plan(flux)));
-        let names = [&joint.plates[0].name, &joint.plates[1].name].map(String::as_str);
-        let faces = FacePair::of(&joint.title, (field, map), (names, heat)).furnished(furnish);
+        let names = joint
+            .meeting(fields.interface)
+            .map(|plate| plate.name.as_str());
+        let faces = FacePair::of(&heading, (field, map), (names, heat)).furnished(furnish);
         drawings.push((TEMPERATURE, Drawing::Faces(Box::new(faces))));
     }
     if let Some(section) = &fields.section {
@@ -100,10 +103,10 @@ pub fn pressure(joint: &Joint, nominal: &Estimate, field: &FieldMap) -> PlanMap 
     )
 }
 
-/// The title of the joint; of a stack with the interface that is drawn, the first.
-fn title(joint: &Joint) -> String {
+/// The title of the joint; of a stack with the interface that is drawn.
+fn title(joint: &Joint, interface: usize) -> String {
     if joint.interfaces() > 1 {
-        format!("{}: {}", joint.title, joint.interface_name(0))
+        format!("{}: {}", joint.title, joint.interface_name(interface))
     } else {
         joint.title.clone()
     }

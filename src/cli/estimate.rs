@@ -3,15 +3,15 @@
 use crate::{
     cli::{
         batch::Batch,
-        chain::{self, Estimated, Rings, Task},
+        chain::{self, Beside, Estimated, Rings, Task},
         check,
         console::{Console, Layout, Outcome, Trouble},
+        draws::Draws,
         field::Field,
         input,
         output::Existing,
         results::Results,
     },
-    estimate::Options,
     joint::Joint,
     report::{
         csv::{self, Ended},
@@ -57,9 +57,16 @@ pub struct Estimate {
     /// Add the rings around every bolt
     #[arg(long)]
     rings: bool,
+    /// Interface of the rings, counted from 1 at the warm side
+    #[arg(long, value_name = "N", default_value_t = 1, requires = "rings")]
+    interface: usize,
     /// Add a table of the same joint in media: vacuum,air,helium
     #[arg(long, value_name = "MEDIA", value_delimiter = ',', value_parser = chain::medium)]
     media: Vec<String>,
+    /// Solve N draws one by one and tell how far the surfaces of the draws are off; takes its time
+    #[arg(long, value_name = "N", default_value_t = 0, hide_default_value = true,
+          value_parser = clap::value_parser!(u32).range(..=1000))]
+    verify: u32,
     /// Print one JSON object per file, in SI
     #[arg(long)]
     json: bool,
@@ -82,48 +89,17 @@ pub struct Estimate {
     force: bool,
 }
 
-/// How the low and the high are found.
-#[derive(Clone, Copy, Debug, Args)]
-pub struct Draws {
-    /// Joints drawn for low and high; 0 gives the nominal alone
-    #[arg(long, value_name = "N", default_value_t = 1024,
-          value_parser = draws)]
-    pub draws: u32,
-    /// Seed of the draws
-    #[arg(long, value_name = "N", default_value_t = 1)]
-    pub seed: u64,
-}
-
-impl Draws {
-    /// The same for the chain.
-    pub fn options(self) -> Options {
-        Options {
-            draws: self.draws,
-            seed: self.seed,
-        }
-    }
-}
-
-/// Draws below this cannot tell a 5 % quantile.
-const FEWEST: u32 = 20;
-/// Draws above this run past the points the sequence tells apart.
-const MOST: u32 = 1_048_576;
-
-/// A number of draws: none, or enough for the quantiles.
-fn draws(text: &str) -> Result<u32, String> {
-    match text.parse::<u32>() {
-        Ok(count) if count == 0 || (FEWEST..=MOST).contains(&count) => Ok(count),
-        _ => Err(format!(
-            "draws are 0 (nominal alone) or from {FEWEST} to {MOST}; below {FEWEST} there is no 5 % quantile"
-        )),
-    }
-}
-
 impl Estimate {
     /// Estimates every file, also after one at fault.
     pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
         let files = self.batch.files(&self.files);
         input::stdin_at_most_once(&files)?;
+        if let Some(twice) = chain::twice(&self.media) {
+            return Err(Trouble::usage(
+                format!("`{twice}` is named twice in --media"),
+                "name each medium once",
+            ));
+        }
         let out = match &self.out {
             Some(folder) => {
                 let existing = Existing::from_force(self.force);
@@ -197,9 +173,18 @@ impl Estimate {
             choice: self.field.choice()?,
             watch: self.batch.watch(),
         };
-        let rings = if self.rings { Rings::Told } else { Rings::Left };
+        let rings = if self.rings {
+            Rings::Told(chain::interface(&joint, self.interface)?)
+        } else {
+            Rings::Left
+        };
         let media = chain::media(&joint, &self.media);
-        chain::estimate(&task, &self.draws.options(), (rings, &media))
+        let beside = Beside {
+            rings,
+            media: &media,
+            verify: self.verify,
+        };
+        chain::estimate(&task, &self.draws.options(), &beside)
     }
 
     /// Writes an object where results go to files, prints it where JSON is asked for.
@@ -229,6 +214,9 @@ impl Estimate {
         if !self.media.is_empty() {
             object["media"] = json::media(&found.media);
         }
+        if self.verify > 0 {
+            object["verification"] = json::verification(found.verified.as_ref());
+        }
         object
     }
 
@@ -243,6 +231,9 @@ impl Estimate {
         if let Some(case) = estimate.cases.first().filter(|_| !found.media.is_empty()) {
             report.push('\n');
             report.push_str(&media::table(&found.media, case.name));
+        }
+        if self.verify > 0 {
+            report.push_str(&text::verification(found.verified.as_ref()));
         }
         report.push_str(&text::rings(rings));
         report.push_str(&text::ring_sum(estimate, rings));

@@ -111,8 +111,13 @@ pub fn table(folder: &Path, name: &str) -> Result<String, String> {
         }
         _ => found.to_string(),
     })?;
+    text_of_table(file)
+}
+
+fn text_of_table(source: impl Read) -> Result<String, String> {
     let mut bytes = Vec::new();
-    file.take(LONGEST_TABLE as u64 + 1)
+    source
+        .take(LONGEST_TABLE as u64 + 1)
         .read_to_end(&mut bytes)
         .map_err(|found| found.to_string())?;
     if bytes.len() > LONGEST_TABLE {
@@ -127,6 +132,23 @@ pub fn table(folder: &Path, name: &str) -> Result<String, String> {
         let line = before.matches('\n').count() + 1;
         format!("it is not UTF-8 text (line {line}); `um` needs no special sign")
     })
+}
+
+/// The text of a table of readings named on the command line.
+pub fn points(path: &Path) -> Result<Source, Trouble> {
+    let name = name(path);
+    let text = if is_stdin(path) {
+        text_of_table(io::stdin().lock())
+    } else {
+        table(Path::new(""), &path.display().to_string())
+    };
+    match text {
+        Ok(text) => Ok(Source { name, text }),
+        Err(why) => Err(Trouble::usage(
+            format!("`{name}` cannot be read: {why}"),
+            "name a table of readings; `ringsum fit --help` shows its heading",
+        )),
+    }
 }
 
 fn is_stdin(path: &Path) -> bool {

@@ -3,7 +3,7 @@
 //! A file is written under a temporary name in the folder it belongs to and then renamed. Where
 //! the target is a symbolic link, the file it points to is replaced and the link stays.
 
-use crate::cli::console::Trouble;
+use crate::{cli::console::Trouble, figures::Format};
 use std::{
     fs,
     io::{self, Write},
@@ -123,6 +123,23 @@ impl Target {
             }
         };
         Ok(())
+    }
+}
+
+/// The format of a figure by the ending of its file.
+pub fn format(path: &Path) -> Result<Format, Trouble> {
+    let ending = path
+        .extension()
+        .and_then(|ending| ending.to_str())
+        .unwrap_or("")
+        .to_ascii_lowercase();
+    match ending.as_str() {
+        "svg" => Ok(Format::Svg),
+        "png" => Ok(Format::Png),
+        _ => Err(Trouble::usage(
+            format!("`{}` ends in neither .svg nor .png", path.display()),
+            "the ending chooses the format of the figure",
+        )),
     }
 }
 

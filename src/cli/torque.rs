@@ -5,16 +5,16 @@ use crate::{
         chain::{self, Task},
         check,
         console::{Console, Layout, Outcome, Trouble},
-        estimate::Draws,
+        draws::Draws,
         field::{self, Field},
-        output::{Existing, Target},
+        output::{self, Existing, Target},
     },
-    figures::{Drawing, Format},
+    figures::Drawing,
     report::{json, sweep},
-    uncertainty::SweepOptions,
+    uncertainty::{CONFIDENCE, SweepOptions},
 };
 use clap::Args;
-use std::path::{Path, PathBuf};
+use std::path::PathBuf;
 
 /// Resistance against torque, with the torque that strength allows
 #[derive(Debug, Args)]
@@ -35,6 +35,9 @@ pub struct Torque {
     #[arg(long, value_name = "N", default_value_t = 1,
           value_parser = clap::value_parser!(u32).range(1..))]
     group: u32,
+    /// Share of the draws that the band holds and the window rests on: "90 %" is from 5 % to 95 %
+    #[arg(long, value_name = "SHARE", value_parser = chain::confidence)]
+    confidence: Option<f64>,
     #[command(flatten)]
     field: Field,
     #[command(flatten)]
@@ -66,7 +69,7 @@ impl Torque {
         }
         let figure = match &self.out {
             Some(path) => Some((
-                format(path)?,
+                output::format(path)?,
                 Target::new(path, Existing::from_force(self.force))?,
             )),
             None => None,
@@ -88,6 +91,7 @@ impl Torque {
             from: self.from,
             to: self.to,
             steps: self.steps as usize,
+            confidence: self.confidence.unwrap_or(CONFIDENCE),
             chain: self.draws.options(),
         };
         let task = Task {
@@ -106,22 +110,5 @@ impl Torque {
             console.result(&sweep::torque(&found))?;
         }
         Ok(Outcome::Done)
-    }
-}
-
-/// The format of a figure, by the ending of its name.
-pub fn format(path: &Path) -> Result<Format, Trouble> {
-    let ending = path
-        .extension()
-        .and_then(|ending| ending.to_str())
-        .unwrap_or("")
-        .to_ascii_lowercase();
-    match ending.as_str() {
-        "svg" => Ok(Format::Svg),
-        "png" => Ok(Format::Png),
-        _ => Err(Trouble::usage(
-            format!("`{}` ends in neither .svg nor .png", path.display()),
-            "the ending chooses the format of the figure",
-        )),
     }
 }

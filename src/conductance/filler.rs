@@ -1,6 +1,10 @@
 //! Paste, pad, foil or table between the faces, in place of spots and gas.
 
+mod foil;
+
 use crate::{conductance::Interface, joint::FillerKind, numerics::interpolation};
+
+use foil::Foil;
 
 /// Exponent of yield stress over pressure in the bond line of a paste.
 const BOND_LINE_EXPONENT: f64 = 0.166;
@@ -48,6 +52,7 @@ enum Shape {
         /// Half the roughness of both faces, m.
         wetting: f64,
     },
+    Foil(Foil),
     Table(Vec<(f64, f64)>),
 }
 
@@ -56,6 +61,7 @@ impl Filling {
     ///
     /// ```text
     /// layer:  R = t/k + boundary,   t = t₀ exp(−p/M) where its modulus M and the pressure on it are known
+    /// foil:   R = t/k + 1/h of its two boundaries, see [`Foil`]
     /// paste:  R = BLT/k + (σ₁ + σ₂)/(2k),   BLT between the thinnest and the applied bond line
     /// ```
     ///
@@ -90,6 +96,15 @@ impl Filling {
                         .map(|face| face.roughness)
                         .sum::<f64>(),
             },
+            FillerKind::Foil {
+                conductivity,
+                thickness,
+                hardness,
+            } => Shape::Foil(Foil::between(
+                interface,
+                (*thickness, *conductivity),
+                *hardness,
+            )),
             FillerKind::Table { points } => Shape::Table(points.clone()),
         };
         Some(Self {
@@ -113,6 +128,7 @@ impl Filling {
                     wetting,
                     ..
                 } => (self.thickness(pressure) + wetting) / conductivity,
+                Shape::Foil(foil) => foil.resistance(pressure),
                 Shape::Table(points) => interpolation::log_log(points, pressure),
             }
     }
@@ -141,6 +157,7 @@ impl Filling {
                     *applied
                 }
             }
+            Shape::Foil(foil) => foil.thickness,
             Shape::Table(_) => 0.0,
         }
     }
@@ -148,17 +165,30 @@ impl Filling {
     /// Area resistance where the faces stand `opening` (m) further apart than where they meet, m² K/W.
     ///
     /// A paste that nothing presses keeps its thickness as applied (judgement: fresh paste; it creeps
-    /// out in time and then conducts better) and fills no more than that: the `medium` conductance
-    /// crosses what is wider. A pad or foil stays on one face, and the medium crosses the opening.
+    /// out in time and then conducts better) and fills an opening of no more than that: the `medium`
+    /// conductance crosses what is wider. One of stated bond line, applied as thick as it is thin, was
+    /// squeezed to it and fills as much again (judgement). A pad or foil stays on one face, and the
+    /// medium crosses the opening.
+    ///
+    /// ```text
+    /// BLT = b + min(g, a), at least a, at most max(a, 2 b)      b thinnest, a applied, g opening
+    /// ```
     pub(crate) fn parted(&self, opening: f64, medium: impl Fn(f64) -> f64) -> f64 {
         let open = |gap: f64| if gap > 0.0 { medium(gap).recip() } else { 0.0 };
         match &self.shape {
             Shape::Paste {
+                thinnest,
                 applied,
                 conductivity,
                 wetting,
                 ..
-            } => self.factor * (applied + wetting) / conductivity + open(opening - applied),
+            } => {
+                let filled = (thinnest + opening.min(*applied))
+                    .max(*applied)
+                    .min(applied.max(2.0 * thinnest));
+                self.factor * (filled + wetting) / conductivity + open(opening - applied)
+            }
+            Shape::Foil(foil) => self.factor * foil.bulk + open(opening + foil.loose),
             _ => self.resistance(0.0) + open(opening),
         }
     }

@@ -82,6 +82,11 @@ pub struct Interface {
 impl Interface {
     /// Works out all that does not depend on pressure.
     pub fn prepare(&self) -> Local {
+        self.clone().into_local()
+    }
+
+    /// The same of an interface that is not needed any more.
+    pub(crate) fn into_local(self) -> Local {
         Local::of(self)
     }
 }

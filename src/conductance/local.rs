@@ -52,8 +52,8 @@ pub struct Local {
 }
 
 impl Local {
-    pub(crate) fn of(interface: &Interface) -> Self {
-        let spots = Spots::of(interface);
+    pub(crate) fn of(interface: Interface) -> Self {
+        let spots = Spots::of(&interface);
         let roughness = spots.surfaces.roughness;
         let gap = match &interface.filler {
             Some(FillerKind::Fluid { conductivity }) => Some(GapLaw::of_liquid(
@@ -67,21 +67,22 @@ impl Local {
         };
         let radiation = match interface.filler {
             Some(_) => 0.0,
-            None => medium_radiation(interface),
+            None => medium_radiation(&interface),
         };
         let mut local = Self {
             spots,
             gap,
-            filling: Filling::of(interface),
+            filling: Filling::of(&interface),
             radiation,
-            film_resistance: film::resistance(interface),
+            film_resistance: film::resistance(&interface),
             unloaded: 0.0,
             measured: None,
-            interface: interface.clone(),
+            interface,
         };
         local.unloaded = local.by_law(0.0);
-        if let Some(points) = &interface.measured {
-            local.take_measured(points);
+        if let Some(points) = local.interface.measured.take() {
+            local.take_measured(&points);
+            local.interface.measured = Some(points);
         }
         local
     }

@@ -76,6 +76,11 @@ fn filler() -> impl Strategy<Value = Option<FillerKind>> {
                 thinnest: 20e-6,
                 applied: 100e-6,
             }),
+            (1e6..1e8f64).prop_map(|hardness| FillerKind::Foil {
+                conductivity: 82.0,
+                thickness: 1e-4,
+                hardness,
+            }),
             Just(FillerKind::Table {
                 points: vec![(0.0, 4e-4), (7e4, 3.5e-4), (3.5e5, 3e-4)],
             }),

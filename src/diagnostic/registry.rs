@@ -6,6 +6,7 @@ use crate::diagnostic::Caution;
 
 mod conductance;
 mod file;
+mod fit;
 mod geometry;
 mod laws;
 mod material;
@@ -94,6 +95,7 @@ pub fn entries() -> &'static [Entry] {
             conductance::ENTRIES,
             material::ENTRIES,
             service::ENTRIES,
+            fit::ENTRIES,
             laws::ENTRIES,
         ]
         .concat();

@@ -1,5 +1,6 @@
 //! Every caution of an estimate, gathered along the chain and put in order of gravity.
 
+mod brittle;
 mod elastic;
 mod faces;
 mod feet;
@@ -12,7 +13,9 @@ use field::GAS_MATTERS;
 use crate::{
     catalog,
     diagnostic::{Caution, registry},
-    estimate::{CaseResult, Chain, Failure, Realisation, State, chain::LARGE_ERROR, group_label},
+    estimate::{
+        CaseResult, Chain, Failure, Realisation, State, chain::LARGE_ERROR, forces, group_label,
+    },
     joint::{FillerKind, Finish, Joint, Medium, Plate, Sink},
     preload,
 };
@@ -24,6 +27,8 @@ const NOTICEABLE: f64 = 40.0;
 const BURNS: f64 = 333.15;
 /// Source to sink this many times the contact-only value is limited by spreading.
 const SPREADING: f64 = 5.0;
+/// Share of source to sink that narrow zones may leave out before it is worth a word.
+const NARROW: f64 = 0.02;
 /// Shanks that carry more than this share of the contact conductance are worth a word.
 const BYPASS: f64 = 0.02;
 
@@ -36,8 +41,8 @@ pub fn gathered(chain: &Chain, cases: &[CaseResult]) -> Result<Vec<Caution>, Fai
     found.extend(preload_cautions(chain));
     found.extend(field::field_cautions(chain, cases));
     found.extend(faces::conductance_cautions(joint, &state, cases));
-    found.extend(faces::material_cautions(joint));
-    found.extend(resistance_cautions(chain, &state, cases));
+    found.extend(faces::material_cautions(joint, cases));
+    found.extend(resistance_cautions(chain, &state, cases)?);
     found.extend(service_cautions(chain, cases)?);
     let mut told: Vec<Caution> = Vec::new();
     for caution in found {
@@ -73,10 +78,34 @@ fn preload_cautions(chain: &Chain) -> Vec<Caution> {
         found.extend(preload::window_cautions(&group));
         for (case, named) in joint.service.cases.iter().enumerate() {
             let force = preload::force_band(fastener).low;
-            let left = prepared.losses(joint, case, 1.0).balance(force);
+            let left = prepared.balance(joint, (case, &Realisation::losing(1.0)), force);
             let label = format!("{name}, {} case, lowest force", named.name);
             found.extend(preload::opened(&label, left));
+            let clamp = prepared.clamp(joint, fastener, case);
+            found.extend(preload::springs_flat(
+                &label_of(&name, named.name),
+                (fastener, clamp),
+            ));
+            let shared = prepared.shared(joint, fastener, case);
+            found.extend(shared.and_then(|shared| {
+                preload::parts(&label_of(&name, named.name), (fastener, &shared))
+            }));
         }
+        let in_service = prepared.in_service(joint, fastener);
+        found.extend(preload::over_in_service(&name, &in_service));
+        found.extend(brittle::plates(joint, &name, fastener));
+    }
+    if forces::on_soft_layer(joint) && joint.bolts().count() > 1 {
+        let loss = joint.losses.and_then(|losses| losses.interaction);
+        let loss = loss.unwrap_or(forces::INTERACTION[1]);
+        found.push(caution(
+            "preload/soft-layer",
+            format!(
+                "a layer that yields lies between the plates: a bolt loses force while the others are tightened ({:.0} \
+                 % taken) and afterwards as the layer creeps; tighten crosswise in several passes, and once more later",
+                100.0 * loss
+            ),
+        ));
     }
     for case in &joint.service.cases {
         let apart = (case.temperature - joint.service.assembly_temperature).abs();
@@ -91,6 +120,10 @@ fn preload_cautions(chain: &Chain) -> Vec<Caution> {
         }
     }
     found
+}
+
+fn label_of(name: &str, case: &str) -> String {
+    format!("{name}, {case} case")
 }
 
 /// A word on a numerical error that is larger than it should be.
@@ -139,13 +172,30 @@ fn plan_grid_cautions(joint: &Joint, cases: &[CaseResult]) -> Vec<Caution> {
     found
 }
 
-fn resistance_cautions(chain: &Chain, state: &State, cases: &[CaseResult]) -> Vec<Caution> {
+fn resistance_cautions(
+    chain: &Chain,
+    state: &State,
+    cases: &[CaseResult],
+) -> Result<Vec<Caution>, Failure> {
     let mut found = Vec::new();
-    found.extend(
-        cases
-            .first()
-            .and_then(|case| error_caution(chain, case.numerical_error)),
-    );
+    let left_out = chain.left_out()?;
+    if let Some(case) = cases.first() {
+        let whole = case.results.source_to_sink.resistance.nominal;
+        found.extend(error_caution(
+            chain,
+            case.numerical_error - left_out / whole,
+        ));
+        if left_out > NARROW * whole {
+            found.push(caution(
+                "resistance/narrow-zone",
+                format!(
+                    "a heated or cooled zone is narrow against the thickness of its plate: source to sink may read up to \
+                     {left_out:.3} K/W low ({:.0} %), on any grid; what the joint adds is less touched",
+                    100.0 * left_out / whole
+                ),
+            ));
+        }
+    }
     if chain.cells().is_some() {
         found.extend(plan_grid_cautions(chain.joint(), cases));
     }
@@ -174,7 +224,7 @@ fn resistance_cautions(chain: &Chain, state: &State, cases: &[CaseResult]) -> Ve
             ));
         }
     }
-    found
+    Ok(found)
 }
 
 fn service_cautions(chain: &Chain, cases: &[CaseResult]) -> Result<Vec<Caution>, Failure> {

@@ -2,6 +2,7 @@
 
 mod conditions;
 mod cone;
+mod draw;
 mod elastic;
 mod form;
 mod geometry;
@@ -9,21 +10,27 @@ mod levels;
 mod temperatures;
 mod warmth;
 
+pub use draw::{DrawPlan, Drawn, Workspace};
 pub(crate) use levels::LARGE_ERROR;
 pub(in crate::estimate) use warmth::Warmth;
 
-use std::borrow::Cow;
+use std::{
+    borrow::Cow,
+    sync::{Arc, OnceLock},
+};
 
 use conditions::Conditions;
 use cone::ConeModel;
 use elastic::ElasticModel;
+use form::with_error;
 
 use crate::{
     diagnostic::Caution,
     estimate::{
         Band, BoltResult, Choice, Failure, Fineness, InterfaceResult, PressureResult, Realisation,
-        RingRow, Strength, Watch,
+        RingRow, Side, Strength, TorqueLimit, Watch,
         forces::{self, Group},
+        torques::SEPARATION,
     },
     joint::{Fastener, Joint, Medium, Tightening},
     pressure::Cone,
@@ -38,6 +45,8 @@ pub struct Chain<'a> {
     /// Group of each bolt.
     group_of: Vec<usize>,
     model: Model,
+    /// Error of the discretisation, where it has been worked out; shared with other torques and media.
+    error: Arc<OnceLock<f64>>,
 }
 
 /// What stands for the pressure between the faces and for the heat in the plates.
@@ -97,6 +106,7 @@ impl<'a> Chain<'a> {
             .collect();
         let mut chain = Self {
             joint: Cow::Borrowed(joint),
+            error: Arc::default(),
             groups,
             group_of,
             model: match choice {
@@ -125,6 +135,28 @@ impl<'a> Chain<'a> {
         self.with(with_torque(self.joint(), group, torque))
     }
 
+    /// The same joint with a group tightened or graded otherwise; plates, cells and grid are shared, so
+    /// that places, holes and seats must be the same.
+    pub(crate) fn with_fastener(
+        &self,
+        group: usize,
+        fastener: Fastener,
+    ) -> Result<Chain<'static>, Failure> {
+        let mut joint = self.joint().clone();
+        joint.fasteners[group] = fastener;
+        let prepared = Group::new(&joint, &joint.fasteners[group])?;
+        let mut chain = Chain {
+            joint: Cow::Owned(joint),
+            groups: self.groups.clone(),
+            group_of: self.group_of.clone(),
+            model: self.model.clone(),
+            error: self.error.clone(),
+        };
+        chain.groups[group] = prepared;
+        chain.model = chain.levelled()?;
+        Ok(chain)
+    }
+
     /// The same joint in vacuum; plates, cells and grid are shared.
     pub fn in_vacuum(&self) -> Result<Chain<'static>, Failure> {
         self.in_medium(Medium::Vacuum)
@@ -146,6 +178,7 @@ impl<'a> Chain<'a> {
             groups: self.groups.clone(),
             group_of: self.group_of.clone(),
             model: self.model.clone(),
+            error: Arc::default(),
         };
         chain.model = match &self.model {
             Model::Cone(_) => Model::Cone(ConeModel::new(chain.joint())?),
@@ -162,6 +195,7 @@ impl<'a> Chain<'a> {
             groups: self.groups.clone(),
             group_of: self.group_of.clone(),
             model: self.model.clone(),
+            error: self.error.clone(),
         };
         chain.model = chain.levelled()?;
         Ok(chain)
@@ -203,6 +237,7 @@ impl<'a> Chain<'a> {
             Model::Cone(model) => model.path(case, &conditions, at),
             Model::Elastic(model) => model.path(self, case, (&conditions, at))?,
         };
+        let path = with_error(path, at.numerical);
         self.check(case, &path)?;
         Ok(State { conditions, path })
     }
@@ -257,13 +292,13 @@ impl<'a> Chain<'a> {
     }
 
     /// Clamp force of every bolt in service at nominal, for a joint of these groups, N.
-    fn nominal_forces(&self, case: usize, joint: &Joint) -> Vec<f64> {
+    pub(super) fn nominal_forces(&self, case: usize, joint: &Joint) -> Vec<f64> {
         let at = Realisation::default();
         let by_group: Vec<f64> = joint
             .fasteners
             .iter()
             .zip(&self.groups)
-            .map(|(fastener, group)| group.service_force(joint, fastener, (case, &at)))
+            .map(|(fastener, group)| group.service_force((joint, fastener), None, (case, &at)))
             .collect();
         self.of_bolts(&by_group)
     }
@@ -336,6 +371,10 @@ impl<'a> Chain<'a> {
 
     /// Every bolt of a case, at the nominal state.
     pub fn bolts(&self, case: usize, state: &State) -> Vec<BoltResult> {
+        let strengths: Vec<Strength> = self
+            .groups()
+            .map(|(fastener, group)| group.strength(self.joint(), fastener))
+            .collect();
         self.joint
             .bolts()
             .enumerate()
@@ -344,13 +383,15 @@ impl<'a> Chain<'a> {
                     return BoltResult::missing(at);
                 }
                 let group = &self.groups[self.group_of[bolt]];
-                let strength = group.strength(fastener);
+                let strength = &strengths[self.group_of[bolt]];
                 BoltResult {
                     at,
                     missing: false,
                     force: forces::assembly_band(fastener),
                     force_in_service: group.service_band(self.joint(), fastener, case),
+                    axial: group.shared(self.joint(), fastener, case),
                     strength_use: strength.equivalent,
+                    use_in_service: strength.in_service,
                     largest_torque: strength.largest_torque.map(|(torque, _)| torque),
                     contact_radius: match &self.model {
                         Model::Cone(model) => model.contact_radius(bolt),
@@ -394,9 +435,14 @@ impl<'a> Chain<'a> {
         }
     }
 
-    /// How the faces meet at a point in joint coordinates, first case at nominal; none off the
-    /// faying faces or in a hole.
+    /// How the faces of the first interface meet at a point in joint coordinates, first case at nominal;
+    /// none off the faying faces or in a hole.
     pub fn met_at(&self, point: [f64; 2], state: &State) -> Option<Meeting> {
+        self.met_in(0, point, state)
+    }
+
+    /// The same in any interface, counted from the warm side; the cone has one.
+    pub fn met_in(&self, interface: usize, point: [f64; 2], state: &State) -> Option<Meeting> {
         match &self.model {
             Model::Cone(model) => {
                 let forces = model.clamping(&state.conditions.forces);
@@ -406,15 +452,20 @@ impl<'a> Chain<'a> {
                     gap: None,
                 })
             }
-            Model::Elastic(model) => model.met_at(self, point),
+            Model::Elastic(model) => model.met_at(self, (point, interface)),
         }
     }
 
-    /// The rings around one bolt, from the hole outward.
+    /// The rings around one bolt in the first interface, from the hole outward.
     pub fn rings(&self, bolt: usize, state: &State) -> Vec<RingRow> {
+        self.rings_in(0, bolt, state)
+    }
+
+    /// The same in any interface, counted from the warm side; the cone has one.
+    pub fn rings_in(&self, interface: usize, bolt: usize, state: &State) -> Vec<RingRow> {
         match &self.model {
             Model::Cone(model) => model.rings(&state.conditions, bolt),
-            Model::Elastic(model) => model.rings(self, bolt),
+            Model::Elastic(model) => model.rings(self, (bolt, interface)),
         }
     }
 
@@ -433,7 +484,27 @@ impl<'a> Chain<'a> {
 
     /// What the bolts of a group bear.
     pub fn strength(&self, group: usize) -> Strength {
-        self.groups[group].strength(&self.joint.fasteners[group])
+        self.groups[group].strength(&self.joint, &self.joint.fasteners[group])
+    }
+
+    /// Every limit of strength and separation on the torque of a group, torque rising.
+    pub fn torque_limits(&self, group: usize) -> Vec<TorqueLimit> {
+        let (prepared, fastener) = (&self.groups[group], &self.joint.fasteners[group]);
+        let least = prepared.least_torque(&self.joint, fastener);
+        let least = least.map(|torque| TorqueLimit {
+            name: SEPARATION,
+            torque,
+            side: Side::Least,
+        });
+        let most = prepared.most_torques(&self.joint, fastener);
+        let most = most.into_iter().map(|(name, torque)| TorqueLimit {
+            name,
+            torque,
+            side: Side::Most,
+        });
+        let mut limits: Vec<TorqueLimit> = least.into_iter().chain(most).collect();
+        limits.sort_by(|one, other| one.torque.total_cmp(&other.torque));
+        limits
     }
 
     /// Force at assembly of a group.
@@ -474,10 +545,32 @@ impl<'a> Chain<'a> {
     /// Error of the discretisation at the nominal state of the first case, relative to source to
     /// sink.
     pub fn discretisation_error(&self, state: &State) -> Result<f64, Failure> {
-        match &self.model {
+        if let Some(error) = self.known_error() {
+            return Ok(error);
+        }
+        let error = match &self.model {
             Model::Cone(model) => model.discretisation_error(self, state),
             Model::Elastic(model) => model.discretisation_error(self),
+        }?;
+        Ok(*self.error.get_or_init(|| error))
+    }
+
+    /// The same where this chain, or the one it comes from, has worked it out.
+    pub(crate) fn known_error(&self) -> Option<f64> {
+        self.error.get().copied()
+    }
+
+    /// Bolts whose forces move together in the draws: every group, or every bolt for itself.
+    pub(super) fn force_classes(&self) -> Vec<Vec<usize>> {
+        let bolts = 0..self.group_of.len();
+        if self.joint.bolts_scatter.own > 0.0 {
+            return bolts.map(|bolt| vec![bolt]).collect();
         }
+        let mut classes = vec![Vec::new(); self.groups.len()];
+        for bolt in bolts {
+            classes[self.group_of[bolt]].push(bolt);
+        }
+        classes
     }
 
     /// Share of what the gas takes off the joint's resistance: 0 in vacuum, near 1 where the gas

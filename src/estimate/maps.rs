@@ -5,13 +5,14 @@ use crate::{
     joint::{Joint, Plate},
 };
 
-/// Pressure, gap and local conductance of the first interface over the window of all plates,
-/// `columns` points wide.
-pub fn field_map(chain: &Chain, columns: usize) -> Result<FieldMap, Failure> {
+/// Pressure, gap and local conductance of an interface, counted from the warm side, over the window of
+/// all plates, `columns` points wide.
+pub fn field_map(chain: &Chain, interface: usize, columns: usize) -> Result<FieldMap, Failure> {
     let state = chain.state(0, &Realisation::default())?;
-    let peak = chain.pressure(0, &state)?.peak;
-    let first = &state.conditions.faces[0];
-    let faces = first.over_many_points(peak);
+    let pressure = chain.pressure(0, &state)?;
+    let peak = chain.interfaces(0, (&state, &pressure))?[interface].peak;
+    let local = &state.conditions.faces[interface];
+    let faces = local.over_many_points(peak);
     let window = window(chain.joint());
     let [left, lower, right, upper] = window;
     let step = (right - left) / columns as f64;
@@ -29,18 +30,18 @@ pub fn field_map(chain: &Chain, columns: usize) -> Result<FieldMap, Failure> {
         let y = lower + (upper - lower) * (row as f64 + 0.5) / rows as f64;
         for column in 0..columns {
             let x = left + (column as f64 + 0.5) * step;
-            let met = chain.met_at([x, y], &state);
+            let met = chain.met_in(interface, [x, y], &state);
             map.pressure.push(met.map_or(f64::NAN, |met| met.pressure));
             map.conductance
                 .push(met.map_or(f64::NAN, |met| match met.gap {
-                    Some(gap) if gap > 0.0 => first.local.parted(gap),
+                    Some(gap) if gap > 0.0 => local.local.parted(gap),
                     _ => faces(met.pressure),
                 }));
             if let Some(gaps) = &mut map.gap {
                 // Beside feet the gap is their height, which would drown the gaps under them.
                 let on_feet = chain
                     .joint()
-                    .meeting(0)
+                    .meeting(interface)
                     .iter()
                     .all(|plate| plate.stands_at([x, y]));
                 let gap = met.filter(|_| on_feet).and_then(|met| met.gap);
@@ -51,11 +52,11 @@ pub fn field_map(chain: &Chain, columns: usize) -> Result<FieldMap, Failure> {
     Ok(map)
 }
 
-/// The rings around every bolt, in file order.
-pub fn ring_tables(chain: &Chain) -> Result<Vec<Vec<RingRow>>, Failure> {
+/// The rings around every bolt in an interface, in file order.
+pub fn ring_tables(chain: &Chain, interface: usize) -> Result<Vec<Vec<RingRow>>, Failure> {
     let state = chain.state(0, &Realisation::default())?;
     Ok((0..state.conditions.forces.len())
-        .map(|bolt| chain.rings(bolt, &state))
+        .map(|bolt| chain.rings_in(interface, bolt, &state))
         .collect())
 }
 

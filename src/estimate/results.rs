@@ -6,10 +6,11 @@ use crate::{
         registry::{self, Gravity},
     },
     estimate::{
-        Temperatures,
+        Temperatures, TorqueWindow,
         cautions::{FLATNESS_DECIDES, GAP_IGNORED},
     },
     joint::{Joint, Limit, RequirementKind},
+    preload::Shared,
     resistance::Path,
 };
 
@@ -31,6 +32,16 @@ impl Band {
             low: None,
             nominal,
             high: None,
+        }
+    }
+
+    /// Every number times a positive factor.
+    #[must_use]
+    pub fn times(&self, factor: f64) -> Self {
+        Self {
+            low: self.low.map(|low| low * factor),
+            nominal: self.nominal * factor,
+            high: self.high.map(|high| high * factor),
         }
     }
 
@@ -80,6 +91,10 @@ pub struct BoltResult {
     pub force_in_service: Band,
     /// Equivalent stress over yield: nominal and at the highest force; none without a yield strength.
     pub strength_use: Option<[f64; 2]>,
+    /// What a load from outside does in this case; none where none is stated.
+    pub axial: Option<Shared>,
+    /// Equivalent stress in service over yield at the worst case; none without a yield strength.
+    pub use_in_service: Option<f64>,
     /// Largest torque that passes every limit, N m; none when the preload is given.
     pub largest_torque: Option<f64>,
     /// Radius where contact ends, m.
@@ -101,7 +116,9 @@ impl BoltResult {
             missing: true,
             force: none,
             force_in_service: none,
+            axial: None,
             strength_use: None,
+            use_in_service: None,
             largest_torque: None,
             contact_radius: 0.0,
             contact_conductance: 0.0,
@@ -301,6 +318,8 @@ pub struct CaseResult {
     pub name: &'static str,
     /// Mean sink surface temperature, K.
     pub sink_temperature: f64,
+    /// Whether the sink surface radiates, so that its temperature follows from the heat.
+    pub sink_radiates: bool,
     /// Every bolt in file order.
     pub bolts: Vec<BoltResult>,
     /// The pressure field; in a stack that of the first interface.
@@ -315,9 +334,13 @@ pub struct CaseResult {
     pub resistance_upper: Option<f64>,
     /// Ring discretisation error, relative to source to sink.
     pub numerical_error: f64,
+    /// Every input at its unfavourable end; none without draws, and where an end has no number.
+    pub worst: Option<Worst>,
     /// Largest error of the surface that the draws are read from, relative to source to sink; none
     /// where every draw is solved, and without draws.
     pub draw_error: Option<f64>,
+    /// How well the draws know the ends of the bands; none without draws, and with too few to tell.
+    pub sampling: Option<Sampling>,
     /// Area of the faying faces, m²; in a stack that of the first interface.
     pub footprint: f64,
     /// Temperature rises, when heat is stated.
@@ -328,6 +351,47 @@ pub struct CaseResult {
     pub requirement: Option<RequirementResult>,
     /// Share of the variance of the source-to-sink resistance by input, largest first; empty without draws.
     pub drivers: Vec<Driver>,
+}
+
+/// How well draws know the ends of the bands: standard errors of low and high, K/W.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Sampling {
+    /// Independent scramblings among which the draws are divided.
+    pub scrambles: usize,
+    /// Faying faces alone.
+    pub contact: [f64; 2],
+    /// Node to node.
+    pub node_to_node: [f64; 2],
+    /// Added by the joint.
+    pub added_by_joint: [f64; 2],
+    /// Source to sink.
+    pub source_to_sink: [f64; 2],
+    /// Source to sink after a fourth, a half and all of the draws.
+    pub course: Vec<Checkpoint>,
+}
+
+/// The ends of a band after so many draws, as they were drawn, K/W.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Checkpoint {
+    /// Draws so far.
+    pub draws: usize,
+    /// 5 % quantile.
+    pub low: f64,
+    /// 95 % quantile.
+    pub high: f64,
+}
+
+/// Least and most of the four results with every input at the end that leads there, K/W.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Worst {
+    /// The faying faces alone.
+    pub contact: [f64; 2],
+    /// Mean of the first plate to mean of the last.
+    pub node_to_node: [f64; 2],
+    /// What the joint adds to the same path with perfect contact.
+    pub added_by_joint: [f64; 2],
+    /// Heated zone to sink surface.
+    pub source_to_sink: [f64; 2],
 }
 
 /// One input and its share of the spread.
@@ -357,6 +421,8 @@ pub struct Estimate {
     pub field: &'static str,
     /// The resolution: `fast`, `normal` or `fine`.
     pub resolution: &'static str,
+    /// How the bolts scatter together, in words.
+    pub bolts_scatter: String,
     /// Name of the source plane.
     pub source_plane: String,
     /// Name of the sink plane.
@@ -485,10 +551,16 @@ pub struct TorqueSweep {
     pub best: Option<f64>,
     /// The lowest point of the curve between swept torques, where it has one inside the window.
     pub minimum: Option<Minimum>,
+    /// Source to sink at the stated torque itself, K/W.
+    pub at_stated: f64,
+    /// The joint at the torque where strength ends, where that is the best and stands between two rows.
+    pub at_limit: Option<Minimum>,
     /// Points, torque rising.
     pub points: Vec<TorquePoint>,
     /// Requirement in K/W of source to sink, where one can be put so.
     pub required: Option<(f64, Limit)>,
+    /// The torques that heat and strength allow.
+    pub window: TorqueWindow,
     /// Cautions.
     pub cautions: Vec<Caution>,
 }

@@ -44,11 +44,15 @@ pub struct HeatMap {
     pub concentration: Vec<f64>,
 }
 
-/// Temperatures of both faying faces and the flux between them in the first case at nominal,
-/// `columns` points wide; none for the cone, which solves no temperatures.
+/// Temperatures of both faying faces of an interface and the flux between them in the first case at
+/// nominal, `columns` points wide; none for the cone, which solves no temperatures.
 ///
 /// The mean of the flux is that over the whole interface, what lies beside feet included.
-pub fn heat_map(chain: &Chain, columns: usize) -> Result<Option<HeatMap>, Failure> {
+pub fn heat_map(
+    chain: &Chain,
+    interface: usize,
+    columns: usize,
+) -> Result<Option<HeatMap>, Failure> {
     let window = window(chain.joint());
     let [left, lower, right, upper] = window;
     let step = (right - left) / columns as f64;
@@ -59,7 +63,7 @@ pub fn heat_map(chain: &Chain, columns: usize) -> Result<Option<HeatMap>, Failur
             (0..columns).map(move |column| [left + (column as f64 + 0.5) * step, y])
         })
         .collect();
-    let Some(found) = chain.face_points(&points)? else {
+    let Some(found) = chain.face_points_in(interface, &points)? else {
         return Ok(None);
     };
     let values = |of: &dyn Fn(&FacePoint) -> f64| -> Vec<f64> {

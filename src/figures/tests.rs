@@ -5,8 +5,8 @@ use proptest::prelude::*;
 
 use crate::{
     estimate::{
-        Band, Minimum, SectionBolt, SectionPlate, Solid, StackSection, Through, TorquePoint,
-        TorqueSweep,
+        Band, End, Minimum, Range, SectionBolt, SectionPlate, Side, Solid, StackSection, Through,
+        TorqueLimit, TorquePoint, TorqueSweep, TorqueWindow,
     },
     figures::{
         CumulativePlot, Curve, DetailKind, Drawing, FacePair, PlanBolt, PlanDetail, PlanMap,
@@ -144,6 +144,8 @@ fn sweep(stated: f64, largest: f64, required: f64, size: f64) -> TorqueSweep {
         stated,
         largest: Some((largest, "pressure under the head")),
         best: Some(3.0),
+        at_stated: 0.165,
+        at_limit: None,
         minimum: None,
         points: (1..=20)
             .map(|k| {
@@ -160,6 +162,44 @@ fn sweep(stated: f64, largest: f64, required: f64, size: f64) -> TorqueSweep {
             })
             .collect(),
         required: Some((required * size, Limit::Most)),
+        window: TorqueWindow {
+            confidence: Some(0.9),
+            knee: Some(1.4),
+            limits: vec![
+                TorqueLimit {
+                    name: "separation",
+                    torque: 0.6,
+                    side: Side::Least,
+                },
+                TorqueLimit {
+                    name: "pressure under the head",
+                    torque: largest,
+                    side: Side::Most,
+                },
+                TorqueLimit {
+                    name: "proof load",
+                    torque: 3.6,
+                    side: Side::Most,
+                },
+            ],
+            strength: None,
+            heat: Some(Vec::new()),
+            both: Some(Range {
+                low: End {
+                    torque: 1.1,
+                    by: "the requirement",
+                },
+                high: End {
+                    torque: largest,
+                    by: "pressure under the head",
+                },
+            }),
+            trusted: true,
+            plates_fail: false,
+            force_ratio: None,
+            larger_thread: None,
+            trials: Vec::new(),
+        },
         cautions: Vec::new(),
     }
 }

@@ -1,7 +1,7 @@
 //! Resistance against torque: what tightening buys, and where the bolt ends it.
 
 use crate::{
-    estimate::{Band, TorqueSweep},
+    estimate::{Band, Side, TorqueSweep},
     figures::{
         FigureError,
         axis::{self, Axis, BELOW, Grid},
@@ -11,10 +11,11 @@ use crate::{
         legend::{Sample, hatch, hollow_dot, legend},
         lettering::{Anchor, Lettering},
         ramp,
-        sheet::{ACCENT, Colour, INK, LABEL, NARROW, Sheet, Stroke, WIDE},
+        sheet::{ACCENT, Colour, INK, LABEL, NARROW, PAPER, Sheet, Stroke, WIDE},
     },
     joint::Limit,
     report::sweep::worse,
+    uncertainty::CONFIDENCE,
 };
 
 const MARGIN: f64 = 20.0;
@@ -26,6 +27,11 @@ const BETWEEN: f64 = 20.0;
 const REQUIRED: Stroke = Stroke::dashed(WIDE, ACCENT, &[8.0, 3.0]);
 const STATED: Stroke = Stroke::solid(0.8, INK);
 const LARGEST: Stroke = Stroke::solid(0.8, ACCENT);
+const KNEE: Stroke = Stroke::dashed(0.8, INK, &[2.0, 2.0]);
+const FURTHER: Stroke = Stroke::dashed(0.8, ACCENT, &[2.0, 2.0]);
+/// The bar of the window.
+const WINDOW: Colour = Colour(0x3F, 0x8F, 0x5B);
+const BAR: f64 = 6.0;
 
 /// One torque with a band, shown unit.
 #[derive(Clone, Copy)]
@@ -93,7 +99,16 @@ pub(super) fn draw(sweep: &TorqueSweep) -> Result<Sheet, FigureError> {
     let barred = sweep
         .largest
         .map(|(largest, _)| across(largest).clamp(left, right));
+    let parted = sweep
+        .window
+        .limits
+        .iter()
+        .find(|limit| limit.side == Side::Least)
+        .map(|limit| across(limit.torque).clamp(left, right));
     for frame in [upper, lower] {
+        if let Some(to) = parted.filter(|to| *to > left) {
+            hatch(&mut sheet, Frame { right: to, ..frame });
+        }
         if let Some(from) = barred.filter(|from| *from < right) {
             hatch(
                 &mut sheet,
@@ -153,6 +168,9 @@ pub(super) fn draw(sweep: &TorqueSweep) -> Result<Sheet, FigureError> {
             sheet.disc(*only, 3.0, nominal().colour);
         }
     }
+    if let Some(bar) = window_bar(sweep, (&x_axis, upper), &across) {
+        sheet.area(bar, WINDOW);
+    }
     if let Some(best) = best
         && let Some(value) = between(&upper_points, best, |point| point.nominal)
     {
@@ -174,9 +192,29 @@ pub(super) fn draw(sweep: &TorqueSweep) -> Result<Sheet, FigureError> {
     sheet.size[1] = legend(
         &mut sheet,
         room,
-        &key(sweep, barred.is_some_and(|b| b < right)),
+        &key(
+            sweep,
+            [
+                barred.is_some_and(|from| from < right),
+                parted.is_some_and(|to| to > left),
+            ],
+        ),
     ) + 12.0;
     Ok(sheet)
+}
+
+/// The bar along the foot of the frame over the torques that heat and strength allow.
+fn window_bar(
+    sweep: &TorqueSweep,
+    (x_axis, frame): (&Axis, Frame),
+    across: &impl Fn(f64) -> f64,
+) -> Option<Vec<[f64; 2]>> {
+    let both = sweep.window.both?;
+    let [low, high] = [both.low, both.high].map(|end| end.torque.clamp(x_axis.low, x_axis.high));
+    let [from, to] = [low, high].map(across);
+    let [top, foot] = [frame.bottom - BAR, frame.bottom];
+    let bar = [[from, top], [to, top], [to, foot], [from, foot]];
+    (from < to).then(|| frame.area(&bar))
 }
 
 /// The points with the minimum between them, its band as wide as that of its neighbours.
@@ -269,36 +307,59 @@ fn resistance_axis(low: f64, high: f64) -> Axis {
     }
 }
 
+/// Labels of the stated and the best torque, the knee and every limit within the axis.
 fn torque_flags(
     sweep: &TorqueSweep,
     x_axis: &Axis,
     across: &impl Fn(f64) -> f64,
 ) -> Result<Vec<Flag>, FigureError> {
-    let mut flags = vec![Flag {
-        x: across(sweep.stated),
-        text: format!("stated {} N\u{a0}m", axis::plain(sweep.stated)),
-        stroke: STATED,
-    }];
-    if let Some(best) = worse(sweep).map(|worse| worse.beyond)
-        && (x_axis.low..=x_axis.high).contains(&best)
-    {
-        flags.push(Flag {
-            x: across(best),
-            text: format!("best {} N\u{a0}m, worse beyond", axis::plain(best)),
-            stroke: Stroke {
-                width: 0.8,
-                ..nominal()
-            },
-        });
-    }
+    let flag = |torque: f64, text: String, stroke: Stroke| Flag {
+        x: across(torque),
+        text,
+        stroke,
+    };
+    let drawn = |torque: f64| (x_axis.low..=x_axis.high).contains(&torque);
+    let number = |torque: f64| format!("{} N\u{a0}m", axis::plain(torque));
+    let mut flags = vec![flag(
+        sweep.stated,
+        format!("stated {}", number(sweep.stated)),
+        STATED,
+    )];
     if let Some((largest, limit)) = sweep.largest {
         let largest = drawable(largest, "the largest torque")?;
-        if (x_axis.low..=x_axis.high).contains(&largest) {
-            flags.push(Flag {
-                x: across(largest),
-                text: format!("largest {} N\u{a0}m: {limit}", axis::plain(largest)),
-                stroke: LARGEST,
-            });
+        if drawn(largest) {
+            let text = format!("largest {}: {limit}", number(largest));
+            flags.push(flag(largest, text, LARGEST));
+        }
+    }
+    if let Some(best) = worse(sweep).map(|worse| worse.beyond)
+        && drawn(best)
+    {
+        let stroke = Stroke {
+            width: 0.8,
+            ..nominal()
+        };
+        flags.push(flag(
+            best,
+            format!("best {}, worse beyond", number(best)),
+            stroke,
+        ));
+    }
+    if let Some(knee) = sweep.window.knee {
+        let knee = drawable(knee, "the knee")?;
+        if drawn(knee) {
+            flags.push(flag(knee, format!("knee {}", number(knee)), KNEE));
+        }
+    }
+    for limit in &sweep.window.limits {
+        let torque = drawable(limit.torque, "a limit")?;
+        let told = sweep.largest.is_some_and(|(_, name)| name == limit.name);
+        if drawn(torque) && !told {
+            flags.push(flag(
+                torque,
+                format!("{} {}", limit.name, number(torque)),
+                FURTHER,
+            ));
         }
     }
     Ok(flags)
@@ -367,6 +428,17 @@ fn between(points: &[Point], torque: f64, of: fn(&Point) -> f64) -> Option<f64> 
     Some(of(&pair[0]) + t * (of(&pair[1]) - of(&pair[0])))
 }
 
+/// The band by its quantiles: a share of 0.9 is from 5 % to 95 %.
+fn band_name(confidence: Option<f64>) -> String {
+    let share = confidence.unwrap_or(CONFIDENCE);
+    let [low, high] = [50.0 - 50.0 * share, 50.0 + 50.0 * share];
+    format!(
+        "nominal in the band from {} % to {} %",
+        axis::plain(low),
+        axis::plain(high)
+    )
+}
+
 fn best_name(sweep: &TorqueSweep) -> &'static str {
     if sweep.resists() {
         "highest that strength allows"
@@ -377,12 +449,12 @@ fn best_name(sweep: &TorqueSweep) -> &'static str {
     }
 }
 
-fn key(sweep: &TorqueSweep, barred: bool) -> Vec<(Sample, String)> {
+fn key(sweep: &TorqueSweep, [barred, parted]: [bool; 2]) -> Vec<(Sample, String)> {
     let banded = sweep.points.iter().any(|p| p.source_to_sink.high.is_some());
     let mut items = vec![if banded {
         (
             Sample::Band(band_colour(), nominal()),
-            "nominal in the band from 5 % to 95 %".to_owned(),
+            band_name(sweep.window.confidence),
         )
     } else {
         (Sample::Line(nominal()), "nominal".to_owned())
@@ -393,9 +465,29 @@ fn key(sweep: &TorqueSweep, barred: bool) -> Vec<(Sample, String)> {
             format!("{}, at {} N\u{a0}m", best_name(sweep), axis::plain(best)),
         ));
     }
-    if barred {
-        items.push((Sample::Hatch, "beyond the largest torque".into()));
+    match (barred, parted) {
+        (true, true) => items.push((
+            Sample::Hatch,
+            "beyond the largest torque, or the faces may part".into(),
+        )),
+        (true, false) => items.push((Sample::Hatch, "beyond the largest torque".into())),
+        (false, true) => items.push((Sample::Hatch, "the faces may part".into())),
+        (false, false) => {}
     }
+    items.push(match (sweep.window.both, &sweep.window.heat) {
+        (Some(_), Some(_)) => (
+            Sample::Patch(WINDOW),
+            "torque window: heat and strength met".into(),
+        ),
+        (Some(_), None) => (
+            Sample::Patch(WINDOW),
+            "torque window by strength alone".into(),
+        ),
+        (None, _) => (
+            Sample::Patch(PAPER),
+            "no torque meets heat and strength".into(),
+        ),
+    });
     if sweep.required.is_some() {
         items.push((Sample::Line(REQUIRED), "requirement".into()));
     }

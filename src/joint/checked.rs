@@ -1,18 +1,24 @@
 //! The checked joint: SI, nothing missing, every default already recorded as an assumption.
 
+mod bounds;
 mod flatness_map;
 mod heat;
+mod loads;
 mod plates;
 mod sandwich;
+mod uncertain;
 
-use crate::{catalog, diagnostic::Assumption};
+use crate::{catalog, diagnostic::Assumption, numerics::distribution::Shape};
 
+pub use bounds::Bounds;
 pub use flatness_map::FlatnessMap;
 pub use heat::{CooledPart, Cooling, Edge, HeatedZone, Heating, Sink, Source, Zone};
+pub use loads::{AxialLoad, DiscSprings, InsertHold, LockWasher};
 pub use plates::{
     Bimetal, Coating, Facing, Feet, Finish, Outline, Patch, Plate, Rib, Sag, Underside,
 };
 pub use sandwich::{Flange, Ply, PlyKind, Sandwich};
+pub use uncertain::{Bolts, Uncertain, What};
 
 /// Most plates of a joint.
 pub const MOST_PLATES: usize = 6;
@@ -47,39 +53,12 @@ pub struct Joint {
     pub cost: Option<f64>,
     /// Bolts that are left out, counted from 0 in file order, rising; their holes stay.
     pub missing: Vec<usize>,
+    /// Values that the file states with a spread of their own.
+    pub uncertain: Vec<Uncertain>,
+    /// Whether the bolts scatter alike.
+    pub bolts_scatter: Bolts,
     /// What the file did not state.
     pub assumptions: Vec<Assumption>,
-}
-
-/// A value between its bounds: `low ≤ nominal ≤ high`.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Bounds {
-    /// Lowest value.
-    pub low: f64,
-    /// The value of the nominal chain.
-    pub nominal: f64,
-    /// Highest value.
-    pub high: f64,
-}
-
-impl Bounds {
-    /// A value without spread.
-    pub const fn exact(nominal: f64) -> Self {
-        Self {
-            low: nominal,
-            nominal,
-            high: nominal,
-        }
-    }
-
-    /// The value at a place between the bounds: −1 is low, 0 nominal, +1 high, linear between.
-    pub fn at(&self, place: f64) -> f64 {
-        if place < 0.0 {
-            self.nominal + place * (self.nominal - self.low)
-        } else {
-            self.nominal + place * (self.high - self.nominal)
-        }
-    }
 }
 
 /// What surrounds the joint and what is asked of it.
@@ -209,6 +188,14 @@ pub struct Fastener {
     pub shank_path: bool,
     /// Washers that keep the heat of the plates from head and nut.
     pub isolating: Option<Isolating>,
+    /// A load from outside along each bolt.
+    pub axial_load: Option<AxialLoad>,
+    /// Disc springs under head or nut.
+    pub disc_springs: Option<DiscSprings>,
+    /// The spring washer under the head.
+    pub lock_washer: LockWasher,
+    /// How its inserts are held.
+    pub insert_hold: InsertHold,
     /// Places in joint coordinates, m.
     pub places: Vec<[f64; 2]>,
 }
@@ -291,8 +278,12 @@ pub struct TorqueTightening {
     pub torque: f64,
     /// Tolerance of the tool, as a fraction.
     pub tolerance: f64,
+    /// How the weight lies within the tolerance.
+    pub tool: Shape,
     /// Running (prevailing) torque of the locking feature, N m.
     pub running: f64,
+    /// Its spread, N m, where one is stated.
+    pub running_spread: Option<Bounds>,
     /// Whether the file states the running torque.
     pub running_stated: bool,
     /// Friction.
@@ -321,6 +312,8 @@ pub enum Friction {
 pub struct Contact {
     /// Law of the solid spots.
     pub law: Law,
+    /// Factor by which the law may be off either way, one standard deviation.
+    pub law_factor: f64,
     /// Rule for the extent of contact.
     pub cone: ConeRule,
     /// Shape of the pressure over the radius.
@@ -438,7 +431,7 @@ impl Filler {
     /// Checked: `a_layer_of_known_modulus_is_a_bed_of_springs`.
     pub fn stiffness(&self) -> Option<f64> {
         match self.kind {
-            FillerKind::Layer { .. } | FillerKind::Table { .. } => {
+            FillerKind::Layer { .. } | FillerKind::Foil { .. } | FillerKind::Table { .. } => {
                 Some(self.modulus? / self.thickness?)
             }
             FillerKind::Fluid { .. } | FillerKind::Paste { .. } => None,
@@ -453,6 +446,15 @@ pub enum FillerKind {
     Fluid {
         /// Conductivity, W/(m K).
         conductivity: f64,
+    },
+    /// A soft foil that flows into both faces: R″ = t/k and two boundaries that fall with pressure.
+    Foil {
+        /// Conductivity, W/(m K).
+        conductivity: f64,
+        /// Thickness, m.
+        thickness: f64,
+        /// Hardness of the foil, Pa.
+        hardness: f64,
     },
     /// A layer of known thickness: R″ = t/k + boundary.
     Layer {
@@ -498,13 +500,14 @@ pub enum MeasuredKind {
         /// The points.
         points: Vec<(f64, f64)>,
     },
-    /// W/K of one bolt: `G = conductance · (F/force)^force_exponent · (T/temperature)^temperature_exponent`.
+    /// W/K of one bolt: `G = conductance · (F/force)^force_exponent · (T/temperature)^temperature_exponent`,
+    /// or the same of its torque.
     ForceLaw {
         /// Conductance at the reference, W/K.
         conductance: f64,
-        /// Reference force, N.
-        force: f64,
-        /// Exponent of the force, 1.
+        /// Reference load.
+        load: LawLoad,
+        /// Exponent of the force or torque, 1.
         force_exponent: f64,
         /// Reference temperature, K.
         temperature: f64,
@@ -513,14 +516,40 @@ pub enum MeasuredKind {
     },
 }
 
+/// At which load of a bolt a measured law states its conductance.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum LawLoad {
+    /// Clamp force, N.
+    Force(f64),
+    /// Tightening torque, N m.
+    Torque(f64),
+}
+
 /// Losses of clamp force that the file asks for.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Losses {
     /// Sum of settling over all contacts of one bolt, m; none stands for the guide values of its
     /// stack.
-    pub settling: Option<f64>,
+    pub settling: Option<Bounds>,
     /// Short-term relaxation as a fraction of the clamp force.
-    pub relaxation: f64,
+    pub relaxation: Bounds,
+    /// Whether the bolts are tightened again after settling.
+    pub retightened: Retightened,
+    /// Relaxation in the long term as a fraction of the clamp force; exactly zero where none is
+    /// stated.
+    pub long_term: Bounds,
+    /// What a bolt loses while the others are tightened, as a fraction of its clamp force; none stands
+    /// for the judgement on its joint.
+    pub interaction: Option<f64>,
+}
+
+/// Whether bolts are tightened again after they have settled.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Retightened {
+    /// To the full torque: settling and short-term relaxation are over.
+    Yes,
+    /// Never.
+    No,
 }
 
 impl Joint {

@@ -4,10 +4,11 @@ use crate::{
     catalog::{self, Grade, Thread},
     diagnostic::Fault,
     joint::{
-        Engagement, Fastener, Flange, MOST_PLACES, MOST_PLATES,
+        Engagement, Fastener, Flange, LockWasher, MOST_PLACES, MOST_PLATES,
         collector::{Collector, Wording, fault},
         isolating,
         lands::{self, Land, Site},
+        loads,
         materials::Own,
         patterns,
         plates::PlateDraft,
@@ -109,6 +110,14 @@ fn group(
     let isolating = isolating::read(record, (engagement, own), collector);
     let land = seated.map_or_else(Land::default, Seated::land);
     let site = places.map(|places| Site { land, places });
+    let axial_load = loads::axial(record, collector);
+    let disc_springs = loads::springs(record, collector);
+    let insert_hold = loads::insert(record, collector);
+    let lock_washer = match record.flag("split_washer") {
+        None if record.has("split_washer") => None,
+        Some(true) => Some(LockWasher::Split),
+        Some(false) | None => Some(LockWasher::None),
+    };
     let shank_path = record
         .flag("shank_path")
         .or((!record.has("shank_path")).then_some(true));
@@ -132,6 +141,10 @@ fn group(
             head_plate: seated.head_plate,
             shank_path: shank_path?,
             isolating: isolating?,
+            axial_load: axial_load?,
+            disc_springs: disc_springs?,
+            lock_washer: lock_washer?,
+            insert_hold: insert_hold?,
             places: site
                 .as_ref()?
                 .places

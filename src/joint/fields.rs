@@ -63,8 +63,11 @@ pub enum Kind {
     Quantity(Quantity),
     /// Text with a unit, or one of a few words.
     QuantityOr(Quantity, &'static [&'static str]),
-    /// A value, `[low, high]`, `[low, nominal, high]` or a table of those.
+    /// A value with or without its spread: `"5 mm ± 2 %"`, `"4.9 mm to 5.1 mm"`, `[low, high]`,
+    /// `[low, nominal, high]`, or a table that may name a distribution.
     Spread(Measure),
+    /// The same of a quantity, or one of a few words.
+    SpreadOrWord(Quantity, &'static [&'static str]),
     /// A spread of numbers, or a name from the catalogue.
     SpreadOr(Catalogue),
     /// One value for both plates, a list of two, or a table by plate name.
@@ -127,8 +130,11 @@ pub enum Catalogue {
     Filler,
 }
 
-/// Keys of a spread given as a table.
-pub const SPREAD_KEYS: [&str; 3] = ["low", "nominal", "high"];
+/// Keys of a spread given as a table; the first four hold values.
+pub const SPREAD_KEYS: [&str; 5] = ["low", "nominal", "high", "sigma", "distribution"];
+
+/// Names of distributions: the first two take low and high, the others nominal and sigma.
+pub const DISTRIBUTIONS: [&str; 4] = ["uniform", "triangular", "normal", "lognormal"];
 
 /// A field that may be left out, of any value.
 pub(super) const fn field(
@@ -208,6 +214,11 @@ impl Kind {
                 listed(words)
             ),
             Self::Spread(measure) => format!("{} or a range of them", measure.expects()),
+            Self::SpreadOrWord(quantity, words) => format!(
+                "{}, a range of them or {}",
+                Measure::Quantity(quantity).expects(),
+                listed(words)
+            ),
             Self::SpreadOr(catalogue) => {
                 format!("a number, a range of them or {}", catalogue.expects())
             }

@@ -5,12 +5,12 @@ mod layer;
 use crate::{
     catalog::{self, FillerRecord},
     joint::{
-        Filler, FillerKind, Measured, MeasuredKind,
+        Filler, FillerKind, LawLoad, Measured, MeasuredKind,
         collector::{Collector, Wording, fault},
         plates::{PlateDraft, two_ways},
         record::Record,
         seats::unknown_plate,
-        sections::{FILLER, MEASURED},
+        sections::{FILLER, MEASURED, MEASURED_LAW},
         tree::{Span, short},
         walk::missing,
     },
@@ -189,12 +189,10 @@ fn kind(
     if record.has("table") {
         return table(record, collector);
     }
-    // A stated bond line or thickness makes a layer of whatever it is.
     let model = match record.text("model") {
         Some(model) => model,
         None if record.has("model") => return None,
-        None if record.has("bond_line") || record.has("thickness") => "layer",
-        None => known.map_or("layer", |known| known.model.as_str()),
+        None => unstated(record, known),
     };
     match model {
         "fluid" => Some(FillerKind::Fluid {
@@ -205,7 +203,65 @@ fn kind(
             collector.report(missing(record, "table", &line("table")));
             None
         }
+        "foil" => foil(record, known, collector),
         _ => layer::read(record, known, collector),
+    }
+}
+
+/// A foil that yields: thickness, conductivity and hardness, of the file or of the catalogue.
+fn foil(
+    record: &Record,
+    known: Option<&FillerRecord>,
+    collector: &mut Collector,
+) -> Option<FillerKind> {
+    if record.has("boundary") {
+        collector.report(two_ways(record, ["model", "boundary"]).help(
+            "the boundaries of a foil follow from its hardness; with a boundary of your own it is \
+             `model = \"layer\"`",
+        ));
+        return None;
+    }
+    let thickness = layer::thickness(record, known, collector);
+    let conductivity = conductivity(record, known, collector);
+    let from_catalogue = known.and_then(|known| known.hardness.as_ref());
+    let hardness = match (record.number("hardness"), from_catalogue) {
+        (None, _) if record.has("hardness") => None,
+        (None, Some(datum)) => {
+            collector.assume(
+                record.at("hardness"),
+                units::show(datum.value, Quantity::Pressure),
+                format!("catalogue value: {}", datum.source),
+            );
+            Some(datum.value)
+        }
+        (None, None) => {
+            collector.report(missing(record, "hardness", &line("hardness")));
+            None
+        }
+        (stated, _) => stated,
+    };
+    Some(FillerKind::Foil {
+        conductivity: conductivity?,
+        thickness: thickness?,
+        hardness: hardness?,
+    })
+}
+
+/// The model of a filler whose file names none.
+///
+/// A bond line is what a paste was squeezed to: it was liquid then and fills what the bolts open. It is a
+/// layer where the file tells what only a layer has, or names a pad, foil or bond.
+fn unstated(record: &Record, known: Option<&FillerRecord>) -> &'static str {
+    let solid = ["boundary", "modulus"].iter().any(|key| record.has(key));
+    let squeezed = record.has("bond_line") && !solid;
+    if record.has("thickness") || record.has("bond_line") && solid {
+        return "layer";
+    }
+    match known.map(|known| known.model.as_str()) {
+        Some("fluid") if !squeezed => "fluid",
+        Some("fluid" | "paste") => "paste",
+        None if squeezed => "paste",
+        _ => "layer",
     }
 }
 
@@ -250,6 +306,9 @@ fn paste(
     known: Option<&FillerRecord>,
     collector: &mut Collector,
 ) -> Option<FillerKind> {
+    if record.has("bond_line") {
+        return declared(record, known, collector);
+    }
     let conductivity = conductivity(record, known, collector);
     let from_catalogue = known.and_then(|known| known.yield_stress.as_ref());
     let yield_stress = match (record.number("yield_stress"), from_catalogue) {
@@ -300,6 +359,37 @@ fn paste(
         yield_stress: yield_stress?,
         thinnest,
         applied,
+    })
+}
+
+/// A paste of stated bond line: no pressure thins it.
+fn declared(
+    record: &Record,
+    known: Option<&FillerRecord>,
+    collector: &mut Collector,
+) -> Option<FillerKind> {
+    for other in ["thickness", "thinnest", "applied", "yield_stress"] {
+        if record.has(other) {
+            collector.report(two_ways(record, ["bond_line", other]));
+            return None;
+        }
+    }
+    let conductivity = conductivity(record, known, collector);
+    let bond_line = record.number("bond_line");
+    if bond_line.is_some() {
+        collector.assume(
+            record.at("model"),
+            "paste",
+            "a bond line is stated: it fills as much again where the faces part; a cured or solid one is \
+             `model = \"layer\"`",
+        );
+    }
+    Some(FillerKind::Paste {
+        conductivity: conductivity?,
+        // It has flowed already.
+        yield_stress: 0.0,
+        thinnest: bond_line?,
+        applied: bond_line?,
     })
 }
 
@@ -374,7 +464,7 @@ pub(super) fn measured(
         (true, false) => MeasuredKind::Local {
             points: rising(record, "points", collector)?,
         },
-        (false, true) => law(record.record("law")?, temperature, collector)?,
+        (false, true) => law(file, (record.record("law")?, temperature), collector)?,
         (false, false) => {
             let line = MEASURED
                 .field("points")
@@ -389,7 +479,41 @@ pub(super) fn measured(
     }))
 }
 
-fn law(record: &Record, service: Option<f64>, collector: &mut Collector) -> Option<MeasuredKind> {
+fn law(
+    file: &Record,
+    (record, service): (&Record, Option<f64>),
+    collector: &mut Collector,
+) -> Option<MeasuredKind> {
+    let by_torque = match (record.has("force"), record.has("torque")) {
+        (true, true) => {
+            collector.report(two_ways(record, ["force", "torque"]));
+            return None;
+        }
+        (false, false) => {
+            let line = MEASURED_LAW
+                .field("force")
+                .map(crate::joint::fields::Field::line);
+            collector.report(missing(record, "force", &line.unwrap_or_default()));
+            return None;
+        }
+        (_, by_torque) => by_torque,
+    };
+    let exponent_key = if by_torque {
+        "torque_exponent"
+    } else {
+        "force_exponent"
+    };
+    for group in file.records("fastener").iter().filter(|_| by_torque) {
+        collector.require(!group.has("preload"), || {
+            fault(
+                "measured/no-torque",
+                &record.span("torque"),
+                "the law is of torque, and a fastener states its preload",
+            )
+            .expecting("expected a reference force")
+            .help("write `force = \"1 kN\"` in the law, or state the torque of every fastener")
+        });
+    }
     let mut exponent = |key: &str, default: f64, why: &str| match record.number(key) {
         None if record.has(key) => None,
         None => {
@@ -398,7 +522,7 @@ fn law(record: &Record, service: Option<f64>, collector: &mut Collector) -> Opti
         }
         stated => stated,
     };
-    let force_exponent = exponent("force_exponent", 1.0, "not stated: in proportion to force");
+    let force_exponent = exponent(exponent_key, 1.0, "not stated: in proportion to the load");
     let temperature_exponent = exponent(
         "temperature_exponent",
         0.0,
@@ -411,7 +535,11 @@ fn law(record: &Record, service: Option<f64>, collector: &mut Collector) -> Opti
     };
     Some(MeasuredKind::ForceLaw {
         conductance: record.number("conductance")?,
-        force: record.number("force")?,
+        load: if by_torque {
+            LawLoad::Torque(record.number("torque")?)
+        } else {
+            LawLoad::Force(record.number("force")?)
+        },
         force_exponent: force_exponent?,
         temperature: temperature?,
         temperature_exponent: temperature_exponent?,

@@ -43,8 +43,9 @@ pub(super) fn read(plate: &Record, key: &str, collector: &mut Collector) -> Opti
     let roughness = roughness(record, collector);
     let coating = coating(record, collector);
     let roughness = roughness?;
-    let (slope, slope_factor) = if let Some(slope) = record.number("slope") {
-        (slope, 1.0)
+    let stated = record.spread("slope").map(|slope| slope.bounds);
+    let (slope, slope_factor) = if let Some(slope) = stated {
+        (slope.nominal, 1.0)
     } else {
         let slope = slope_from_roughness(roughness.nominal);
         if !record.has("slope") {
@@ -60,6 +61,7 @@ pub(super) fn read(plate: &Record, key: &str, collector: &mut Collector) -> Opti
         roughness,
         slope,
         slope_factor,
+        slope_spread: stated.filter(Bounds::is_spread),
         coating,
     })
 }
@@ -106,11 +108,11 @@ fn roughness(record: &Record, collector: &mut Collector) -> Option<Bounds> {
     };
     let average = &process.roughness_average;
     let [low, high] = average.range.unwrap_or([average.value; 2]);
-    let bounds = Bounds {
-        low: RQ_OVER_RA * low.min(average.value),
-        nominal: RQ_OVER_RA * average.value,
-        high: RQ_OVER_RA * high.max(average.value),
-    };
+    let bounds = Bounds::uniform([
+        RQ_OVER_RA * low.min(average.value),
+        RQ_OVER_RA * average.value,
+        RQ_OVER_RA * high.max(average.value),
+    ]);
     collector.assume(
         record.at("roughness"),
         format!(

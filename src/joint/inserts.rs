@@ -164,6 +164,7 @@ mod tests {
         let mut joint = joint();
         let shim = Plate {
             sandwich: None,
+            flexural_strength: None,
             ..joint.plates[0].clone()
         };
         joint.plates.insert(1, shim);

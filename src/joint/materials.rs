@@ -12,6 +12,7 @@ use crate::{
         tree::{Span, short},
         walk::missing,
     },
+    numerics::distribution::Shape,
 };
 
 /// Poisson's ratio taken for a metal that states none: aluminium, copper and steel lie within
@@ -60,9 +61,9 @@ pub(super) fn of_plate(plate: &Record, own: &Own, collector: &mut Collector) -> 
         return None;
     }
     if let Some(stated) = plate.record("conductivity") {
-        let in_plane = stated.number("in_plane")?;
-        material.conductivity = user(in_plane);
-        material.conductivity_fit = Some(constant(in_plane, LOWEST));
+        let in_plane = stated.spread("in_plane")?;
+        material.conductivity = spread(in_plane);
+        material.conductivity_fit = Some(constant(in_plane.bounds.nominal, LOWEST));
         material.through = Some(user(stated.number("through")?));
     }
     Some(material)
@@ -217,6 +218,7 @@ fn fresh(record: &Record, collector: &mut Collector) -> Option<Material> {
         density: None,
         hardness: None,
         microhardness: None,
+        microhardness_spread: None,
         yield_strength: None,
         bearing_limit: None,
         note: None,
@@ -259,14 +261,16 @@ fn changed(mut material: Material, record: &Record, collector: &mut Collector) -
         material.contraction = None;
     }
     // A stated Meyer hardness replaces a catalogue microhardness, and the other way round.
-    if let Some(value) = record.number("hardness") {
-        material.hardness = Some(user(value));
+    if let Some(value) = record.spread("hardness") {
+        material.hardness = Some(spread(value));
         material.microhardness = None;
+        material.microhardness_spread = None;
     }
     if let Some(micro) = record.record("microhardness")
-        && let (Some(c1), Some(c2)) = (micro.number("c1"), micro.number("c2"))
+        && let (Some(c1), Some(c2)) = (micro.spread("c1"), micro.number("c2"))
     {
-        material.microhardness = Some([c1, c2]);
+        material.microhardness = Some([c1.bounds.nominal, c2]);
+        material.microhardness_spread = Some(spread(c1));
     }
     if let Some(value) = record.number("density") {
         material.density = Some(user(value));
@@ -322,6 +326,7 @@ fn user(value: f64) -> Datum {
     Datum {
         value,
         range: None,
+        shape: Shape::Uniform,
         status: Status::User,
         source: "joint file".into(),
     }
@@ -333,6 +338,7 @@ fn spread(spread: Spread) -> Datum {
             Width::Single => None,
             Width::Range => Some([spread.bounds.low, spread.bounds.high]),
         },
+        shape: spread.bounds.shape,
         ..user(spread.bounds.nominal)
     }
 }

@@ -57,7 +57,7 @@ const CODE: &str = "set/bad-override";
 const EXAMPLE: &str = "for example `--set plate.upper.thickness=\"6 mm\"`";
 
 /// Keys of one table of which only one group may stand.
-const EXCLUSIVE: [&[&[&str]]; 11] = [
+const EXCLUSIVE: [&[&[&str]]; 12] = [
     &[&["torque"], &["preload"]],
     &[&["method"], &["scatter"]],
     &[&["at"], &["pattern"]],
@@ -69,6 +69,7 @@ const EXCLUSIVE: [&[&[&str]]; 11] = [
     &[&["rise"], &["resistance"], &["conductance"]],
     &[&["sink"], &["hot", "cold"]],
     &[&["points"], &["law"]],
+    &[&["force", "force_exponent"], &["torque", "torque_exponent"]],
 ];
 
 /// Whether stating one key excludes another of the same table.

@@ -80,6 +80,7 @@ impl PlateDraft {
             }),
             name: self.name,
             material: self.material?,
+            flexural_strength: self.record.number("flexural_strength"),
             thickness: self.thickness?,
             outline: self.outline?,
             origin: self.origin?,

@@ -122,10 +122,11 @@ impl Record {
             .map_or_else(|| self.place.clone(), |entry| entry.span.clone())
     }
 
-    /// A number or quantity.
+    /// A number or quantity; of a spread the nominal value.
     pub(super) fn number(&self, key: &str) -> Option<f64> {
         match self.value(key)? {
             Value::Number(number) => Some(*number),
+            Value::Spread(spread) => Some(spread.bounds.nominal),
             _ => None,
         }
     }
@@ -160,6 +161,12 @@ impl Record {
             Value::Spread(spread) => Some(*spread),
             _ => None,
         }
+    }
+
+    /// The bounds of a value that is stated with a spread of its own.
+    pub(super) fn stated_spread(&self, key: &str) -> Option<Bounds> {
+        let spread = self.spread(key)?;
+        spread.bounds.is_spread().then_some(spread.bounds)
     }
 
     /// A value per plate.

@@ -8,7 +8,7 @@ use crate::{
     catalog,
     joint::{
         MOST_PLATES,
-        fields::{Catalogue, Field, Kind, Measure, Need, SPREAD_KEYS, Section},
+        fields::{Catalogue, DISTRIBUTIONS, Field, Kind, Measure, Need, SPREAD_KEYS, Section},
         seats::HEADS,
         sections::FILE,
     },
@@ -88,6 +88,11 @@ impl Parts {
             Kind::Quantity(of) => self.quantity(of),
             Kind::QuantityOr(of, words) => any(&[json!({ "enum": words }), self.quantity(of)]),
             Kind::Spread(of) => any(&self.spread(of, field)),
+            Kind::SpreadOrWord(of, words) => {
+                let mut forms = self.spread(Measure::Quantity(of), field);
+                forms.push(json!({ "enum": words }));
+                any(&forms)
+            }
             Kind::SpreadOr(catalogue) => {
                 let mut forms = self.spread(Measure::Number, field);
                 forms.push(self.name(catalogue));
@@ -153,9 +158,22 @@ impl Parts {
 
     fn spread(&mut self, of: Measure, field: &Field) -> Vec<Value> {
         let one = self.measure(of, field);
-        let parts: BTreeMap<_, _> = SPREAD_KEYS.iter().map(|key| (*key, &one)).collect();
+        let sigma = any(&[json!({ "type": "string" }), json!({ "type": "number" })]);
+        let parts: BTreeMap<_, _> = SPREAD_KEYS
+            .iter()
+            .map(|key| match *key {
+                "sigma" => (*key, sigma.clone()),
+                "distribution" => (*key, json!({ "enum": DISTRIBUTIONS })),
+                key => (key, one.clone()),
+            })
+            .collect();
         let table = json!({ "type": "object", "properties": parts, "additionalProperties": false });
-        vec![one.clone(), list(&one, [2, 3]), table]
+        let mut forms = vec![one.clone(), list(&one, [2, 3]), table];
+        if of == Measure::Number {
+            // A number with its spread is a text: `0.12 ± 10 %`.
+            forms.push(json!({ "type": "string", "pattern": "±|\\+/?-| to " }));
+        }
+        forms
     }
 
     fn measure(&mut self, measure: Measure, field: &Field) -> Value {

@@ -3,6 +3,7 @@
 mod fasteners;
 mod filler;
 mod heat;
+mod loads;
 mod plates;
 mod sandwich;
 
@@ -18,6 +19,7 @@ use crate::{
 pub use fasteners::{ENGAGEMENT, FASTENER, FRICTION, PATTERN, TORQUE};
 pub use filler::{FILLER, MEASURED, MEASURED_LAW};
 pub use heat::{CONDUCTIVITY, COOLED, HEATED, ISOLATING, RADIATION};
+pub use loads::{AXIAL_LOAD, DISC_SPRINGS};
 pub use plates::{
     BIMETAL, BOW, CUTOUT, FEET, FINISH, FOOT, MATERIAL, MATERIAL_INLINE, MICROHARDNESS, PLATE,
     PLATING, RIB, SAG,
@@ -134,6 +136,12 @@ pub static FILE: Section = Section {
             "{ settling = \"guide\", relaxation = \"5 %\" }",
         )
         .default("none in the nominal force"),
+        field(
+            "uncertainty",
+            Kind::Table(&UNCERTAINTY),
+            "how inputs scatter together",
+            "{ bolts = \"independent\" }",
+        ),
         field(
             "cost",
             Kind::Number,
@@ -329,6 +337,14 @@ pub static CONTACT: Section = Section {
         )
         .default("hard"),
         field(
+            "scatter",
+            Kind::Quantity(Quantity::Ratio),
+            "how far the law of the solid spots may be off, one standard deviation",
+            "\"15 %\"",
+        )
+        .within(0.0, 9.0)
+        .default("15 %"),
+        field(
             "emissivity",
             Kind::PerPlate(Measure::Number),
             "hemispherical emissivity of the faces",
@@ -347,19 +363,71 @@ pub static LOSSES: Section = Section {
     fields: &[
         field(
             "settling",
-            Kind::QuantityOr(Quantity::Length, &["guide"]),
-            "sum of settling over all contacts of one bolt",
+            Kind::SpreadOrWord(Quantity::Length, &["guide"]),
+            "sum of settling over all contacts of one bolt, or its range",
             "\"guide\"",
         )
         .within(0.0, 1e-3)
         .default("guide values"),
         field(
             "relaxation",
-            Kind::Quantity(Quantity::Ratio),
-            "short-term relaxation of the clamp force",
+            Kind::Spread(Measure::Quantity(Quantity::Ratio)),
+            "short-term relaxation of the clamp force, or its range",
             "\"5 %\"",
         )
         .within(0.0, 0.9)
         .default("5 %"),
+        field(
+            "retightened",
+            Kind::Flag,
+            "whether the bolts are tightened to the full torque again after settling, which then ends settling and short-term relaxation",
+            "true",
+        )
+        .default("false"),
+        field(
+            "long_term",
+            Kind::Spread(Measure::Quantity(Quantity::Ratio)),
+            "relaxation in service beyond the short term, as a share of the clamp force, or its range",
+            "\"3 %\"",
+        )
+        .within(0.0, 0.9)
+        .default("none"),
+        field(
+            "per_decade",
+            Kind::Spread(Measure::Quantity(Quantity::Ratio)),
+            "the same for every decade of time, in place of long_term",
+            "\"1 %\"",
+        )
+        .within(0.0, 0.2),
+        field(
+            "decades",
+            Kind::Number,
+            "decades of time in service after the first hour, with per_decade: 4 is 10 000 h",
+            "4",
+        )
+        .within(0.0, 8.0),
+        field(
+            "interaction",
+            Kind::Quantity(Quantity::Ratio),
+            "what a bolt loses while the others are tightened after it",
+            "\"5 %\"",
+        )
+        .within(0.0, 0.9)
+        .default("5 % where several bolts clamp, 10 % on a soft layer"),
     ],
+};
+
+/// `[uncertainty]`.
+pub static UNCERTAINTY: Section = Section {
+    name: "uncertainty",
+    meaning: "how inputs scatter together",
+    shorthand: None,
+    fields: &[field(
+        "bolts",
+        Kind::QuantityOr(Quantity::Ratio, &["one lot", "independent"]),
+        "whether friction and preload of all bolts lie alike or each for itself, or the share of their variance that is a bolt's own",
+        "\"independent\"",
+    )
+    .within(0.0, 1.0)
+    .default("one lot")],
 };

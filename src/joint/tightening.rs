@@ -10,6 +10,7 @@ use crate::{
         tree::short,
         walk::missing,
     },
+    numerics::distribution::Shape,
 };
 
 /// Tolerance of a torque wrench when none is stated; ISO 6789 tools keep 4 to 6 %.
@@ -116,10 +117,12 @@ fn torque(
 ) -> Option<Tightening> {
     let friction = friction(record, scatter.flatten(), collector);
     let table = record.record("torque")?;
-    let tolerance = match table.number("tolerance") {
-        Some(tolerance) => tolerance,
-        None if table.has("tolerance") => return None,
-        None => {
+    let stated = tool(table, collector)?;
+    let tolerance = match (table.number("tolerance"), stated) {
+        (Some(tolerance), _) => tolerance,
+        (None, Some(stated)) => stated.high / stated.nominal - 1.0,
+        (None, None) if table.has("tolerance") => return None,
+        (None, None) => {
             if scatter.flatten().is_none() {
                 collector.assume(
                     table.at("tolerance"),
@@ -143,7 +146,8 @@ fn torque(
         }
     };
     let torque = table.number("value")?;
-    collector.require(running < torque, || {
+    let most = table.stated_spread("running");
+    collector.require(most.map_or(running, |most| most.high) < torque, || {
         fault(
             "value/min-above-max",
             &table.span("running"),
@@ -155,11 +159,45 @@ fn torque(
     Some(Tightening::Torque(TorqueTightening {
         torque,
         tolerance,
+        tool: stated.map_or(Shape::Uniform, |stated| stated.shape),
         running,
+        running_spread: table.stated_spread("running"),
         running_stated: table.has("running"),
         friction: friction?,
         scatter: scatter?,
     }))
+}
+
+/// The torque with a spread of its own, which then is the tolerance of the tool: the outer option is
+/// none when it is faulty.
+#[expect(clippy::option_option, reason = "faulty and not stated are two things")]
+fn tool(table: &Record, collector: &mut Collector) -> Option<Option<Bounds>> {
+    /// Ends that lie as far below as above within rounding, relative.
+    const EVEN: f64 = 1e-9;
+    let Some(stated) = table.stated_spread("value") else {
+        return Some(None);
+    };
+    if table.has("tolerance") {
+        collector.report(two_ways(table, ["value", "tolerance"]).help(
+            "the spread of `value` is the tolerance of the tool already; state one of the two",
+        ));
+        return None;
+    }
+    let [below, above] = [
+        1.0 - stated.low / stated.nominal,
+        stated.high / stated.nominal - 1.0,
+    ];
+    let even = (below - above).abs() <= EVEN && stated.shape != Shape::LogNormal;
+    collector.require(even, || {
+        fault(
+            "value/distribution",
+            &table.span("value"),
+            "a tool errs as far below its torque as above",
+        )
+        .expecting("expected the same width either way")
+        .help("for example `value = \"1.7 N·m ± 4 %\"`")
+    });
+    even.then_some(Some(stated))
 }
 
 fn friction(record: &Record, scatter: Option<f64>, collector: &mut Collector) -> Option<Friction> {
@@ -173,7 +211,7 @@ fn friction(record: &Record, scatter: Option<f64>, collector: &mut Collector) ->
                 format!("class B, {} to {}", class.values[0], class.values[2]),
                 "not stated; class B is the usual aim of lubricated bolts",
             );
-            return Some(coefficients(bounds(class.values)));
+            return Some(coefficients(Bounds::uniform(class.values)));
         }
     };
     let stated: Vec<&str> = ["class", "thread", "nut_factor"]
@@ -251,7 +289,7 @@ fn named(table: &Record, key: &str, collector: &mut Collector) -> Option<Frictio
         );
         return None;
     };
-    let bounds = bounds(found.values);
+    let bounds = Bounds::uniform(found.values);
     Some(if found.nut_factor {
         Friction::NutFactor(bounds)
     } else {
@@ -283,15 +321,11 @@ impl Single<'_> {
 }
 
 fn widened(nominal: f64, scatter: f64) -> Bounds {
-    Bounds {
-        low: nominal * (1.0 - scatter),
+    Bounds::uniform([
+        nominal * (1.0 - scatter),
         nominal,
-        high: nominal * (1.0 + scatter),
-    }
-}
-
-fn bounds([low, nominal, high]: [f64; 3]) -> Bounds {
-    Bounds { low, nominal, high }
+        nominal * (1.0 + scatter),
+    ])
 }
 
 fn coefficients(bounds: Bounds) -> Friction {

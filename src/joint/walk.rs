@@ -2,6 +2,7 @@
 
 mod lists;
 mod scalars;
+mod spreads;
 
 use std::ops::RangeInclusive;
 
@@ -10,7 +11,7 @@ use crate::{
     joint::{
         MOST_PLACES,
         collector::{Collector, Wording, fault},
-        fields::{Field, Kind, Measure, Need, SPREAD_KEYS, Section, listed},
+        fields::{Field, Kind, Measure, Need, Section, listed},
         record::{Entry, Record, Value},
         sections::{FRICTION, REQUIRE, RISES},
         tree::{Form, Key, Node, Span, short},
@@ -129,8 +130,16 @@ impl Walk<'_> {
                     .map(Value::Number),
             },
             Kind::Spread(measure) => self.spread(stated, measure).map(Value::Spread),
+            Kind::SpreadOrWord(quantity, words) => match &stated.node.form {
+                Form::Text(text) if !text.trim_start().starts_with(starts_a_number) => {
+                    self.choice(stated, words).map(Value::Text)
+                }
+                _ => self
+                    .spread(stated, Measure::Quantity(quantity))
+                    .map(Value::Spread),
+            },
             Kind::SpreadOr(_) => match &stated.node.form {
-                Form::Text(text) => Some(Value::Text(text.clone())),
+                Form::Text(text) if !spreads::is_spread(text) => Some(Value::Text(text.clone())),
                 _ => self.spread(stated, Measure::Number).map(Value::Spread),
             },
             Kind::PerPlate(measure) => self.per_plate(stated, measure).map(Value::PerPlate),
@@ -304,10 +313,6 @@ fn range(field: &Field) -> RangeInclusive<f64> {
     field.range[0]..=field.range[1]
 }
 
-fn spread_key(key: &str) -> Option<usize> {
-    SPREAD_KEYS.iter().position(|known| *known == key)
-}
-
 #[cfg(test)]
 mod tests {
     use std::collections::BTreeSet;
@@ -387,6 +392,7 @@ mod tests {
                 field.kind,
                 Kind::Quantity(_)
                     | Kind::QuantityOr(..)
+                    | Kind::SpreadOrWord(..)
                     | Kind::Spread(_)
                     | Kind::Point
                     | Kind::Points

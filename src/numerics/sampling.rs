@@ -1,35 +1,48 @@
 //! Evenly spread random points, and quantiles of what they give.
 
 mod directions;
+mod tail;
+
+pub use tail::{Missed, REACH, Tail};
 
 use directions::{DIMENSIONS, JOE_KUO};
 
 /// Bits of one coordinate that the sequence itself fixes.
 const BITS: usize = 32;
 
-/// Levels of the scrambling tree that one hash decides: 2⁶ − 1 nodes, one bit each.
-const LEVELS: u32 = 6;
-
-/// Hashes that decide all levels, one below the other.
-const TREES: u32 = 6;
+/// The last of these bits.
+const UNIT: f64 = 1.0 / 4_294_967_296.0;
 
 /// A Sobol sequence with Owen scrambling.
 ///
 /// Every coordinate of every point is uniform on (0, 1), and the points of any block of 2ᵏ fill
 /// the cube evenly; another seed gives an independent randomisation of the same points, so that
-/// the spread over several seeds measures the sampling error. Take 2ᵏ points from index 0.
+/// the spread over several seeds measures the sampling error. The first 2ᵏ points from index 0 are a
+/// net; any other number of points is as unbiased, with a somewhat larger error.
 /// Beyond 64 dimensions the coordinates are independent pseudo-random numbers of the same seed.
 ///
-/// Source: Sobol 1967 with the numbers of Joe & Kuo 2008; nested uniform scrambling of Owen 1995,
-/// its tree of random bits drawn from a hash of seed, dimension and leading bits.
+/// Source: Sobol 1967 with the numbers of Joe & Kuo 2008; nested uniform scrambling of Owen 1995 by
+/// the hash of Laine & Karras 2011 with the constants of Vegdahl 2021 (from memory), in which every
+/// digit is flipped by a bit that depends on seed, dimension and all digits before it.
 /// Checked: `unscrambled_points_are_those_of_scipy`, `scrambled_points_keep_the_net`,
-/// `scrambled_error_falls_faster_than_one_over_n`.
+/// `scrambled_error_falls_faster_than_one_over_n`, `flips_depend_on_the_digits_before_alone`.
 #[derive(Clone, Debug)]
 pub struct Sobol {
     dimensions: usize,
-    columns: Vec<[u32; BITS]>,
+    /// Columns of the generating matrices, the first digit in the lowest bit: digit by digit, all
+    /// dimensions of it side by side.
+    columns: Vec<Vec<u32>>,
     seeds: Option<Vec<u64>>,
     seed: u64,
+}
+
+/// The points of a sequence one after the other.
+#[derive(Clone, Debug)]
+pub struct Walk<'a> {
+    sobol: &'a Sobol,
+    index: u32,
+    /// Digits of the next point, the first in the lowest bit.
+    digits: Vec<u32>,
 }
 
 impl Sobol {
@@ -45,11 +58,21 @@ impl Sobol {
         }
     }
 
+    /// One of many independent scramblings that belong to one seed.
+    pub fn replicate(dimensions: usize, seed: u64, replicate: usize) -> Self {
+        Self::new(
+            dimensions,
+            mixed(seed).wrapping_add(mixed(!(replicate as u64))),
+        )
+    }
+
     /// The sequence as Sobol left it: starts at the origin, point for point that of SciPy.
     pub fn unscrambled(dimensions: usize) -> Self {
+        let own: Vec<[u32; BITS]> = (0..dimensions.min(DIMENSIONS)).map(columns).collect();
+        let digit = |at: usize| own.iter().map(|each| each[at].reverse_bits()).collect();
         Self {
             dimensions,
-            columns: (0..dimensions.min(DIMENSIONS)).map(columns).collect(),
+            columns: (0..BITS).map(digit).collect(),
             seeds: None,
             seed: 0,
         }
@@ -64,20 +87,64 @@ impl Sobol {
     ///
     /// Coordinates of a scrambled point lie strictly between 0 and 1.
     pub fn point(&self, index: u32, out: &mut [f64]) {
+        self.walk(index).next_into(out);
+    }
+
+    /// The points from an index on; what `point` gives, sooner.
+    pub fn walk(&self, index: u32) -> Walk<'_> {
         // The order of Gray's code, in which neighbouring points differ by one column.
-        let gray = index ^ (index >> 1);
-        for (dimension, out) in out.iter_mut().take(self.dimensions).enumerate() {
-            *out = match (self.columns.get(dimension), &self.seeds) {
-                (Some(columns), Some(seeds)) => scrambled(digits(columns, gray), seeds[dimension]),
-                (Some(columns), None) => f64::from(digits(columns, gray)) * 2f64.powi(-32),
-                (None, seeds) => {
-                    let seed = seeds.as_ref().map_or(self.seed, |seeds| seeds[dimension]);
-                    unit(mixed(
-                        seed ^ mixed(u64::from(index) ^ (dimension as u64) << 32),
-                    ))
-                }
-            };
+        let mut rest = index ^ (index >> 1);
+        let mut digits = vec![0; self.dimensions.min(DIMENSIONS)];
+        while rest != 0 {
+            flip(&mut digits, &self.columns[rest.trailing_zeros() as usize]);
+            rest &= rest - 1;
         }
+        Walk {
+            sobol: self,
+            index,
+            digits,
+        }
+    }
+}
+
+impl Walk<'_> {
+    /// Writes the next point to `out`.
+    pub fn next_into(&mut self, out: &mut [f64]) {
+        let own = self.digits.len().min(out.len());
+        match &self.sobol.seeds {
+            Some(seeds) => {
+                let digits = self.digits.iter().zip(seeds);
+                for (out, (digits, seed)) in out.iter_mut().zip(digits) {
+                    *out = (f64::from(scrambled(*digits, *seed)) + 0.5) * UNIT;
+                }
+            }
+            None => {
+                for (out, digits) in out.iter_mut().zip(&self.digits) {
+                    *out = f64::from(digits.reverse_bits()) * UNIT;
+                }
+            }
+        }
+        let beyond = out.iter_mut().enumerate().take(self.sobol.dimensions);
+        for (dimension, out) in beyond.skip(own) {
+            let seeds = self.sobol.seeds.as_ref();
+            let seed = seeds.map_or(self.sobol.seed, |seeds| seeds[dimension]);
+            let place = mixed(u64::from(self.index) ^ (dimension as u64) << 32);
+            *out = unit(mixed(seed ^ place));
+        }
+        self.index = self.index.wrapping_add(1);
+        let column = self.index.trailing_zeros() as usize;
+        match self.sobol.columns.get(column) {
+            Some(column) => flip(&mut self.digits, column),
+            // Past the last point stands the first.
+            None => self.digits.fill(0),
+        }
+    }
+}
+
+/// Adds a column of every dimension, digit by digit without carry.
+fn flip(digits: &mut [u32], column: &[u32]) {
+    for (digits, column) in digits.iter_mut().zip(column) {
+        *digits ^= column;
     }
 }
 
@@ -126,35 +193,19 @@ fn columns(dimension: usize) -> [u32; BITS] {
     columns
 }
 
-fn digits(columns: &[u32; BITS], gray: u32) -> u32 {
-    let mut rest = gray;
-    let mut digits = 0;
-    while rest != 0 {
-        digits ^= columns[rest.trailing_zeros() as usize];
-        rest &= rest - 1;
-    }
-    digits
-}
-
-/// Flips every digit by a random bit that depends on all digits before it.
-fn scrambled(digits: u32, seed: u64) -> f64 {
-    // Six trees of six levels hold 36 digits: four random ones follow those of the sequence.
-    let digits = u64::from(digits) << 4;
-    let mut flips = 0;
-    for step in 0..TREES {
-        let below = LEVELS * (TREES - 1 - step);
-        let prefix = digits >> (below + LEVELS);
-        let tree = mixed(seed ^ prefix ^ u64::from(step) << 40);
-        let group = digits >> below & 0b11_1111;
-        // The node of a level: its row, then the digits above it.
-        for level in 0..LEVELS {
-            let node = 1 << level | group >> (LEVELS - level);
-            flips |= (tree >> node & 1) << (below + LEVELS - 1 - level);
-        }
-    }
-    let below = unit(mixed(!seed ^ digits));
-    // Rounding may carry the sum to one when every digit is set.
-    (((digits ^ flips) as f64 + below) * 2f64.powi(-36)).min(1.0 - f64::EPSILON / 2.0)
+/// Flips every digit by a bit that depends on all digits before it.
+///
+/// Sums, and products with what is odd or even, carry from low bits to high ones alone: with the first
+/// digit in the lowest bit, no digit knows those behind it.
+fn scrambled(digits: u32, seed: u64) -> u32 {
+    let (first, second) = (seed as u32, (seed >> 32) as u32);
+    let mut x = digits;
+    x ^= x.wrapping_mul(0x3D20_ADEA);
+    x = x.wrapping_add(first);
+    x = x.wrapping_mul(second | 1);
+    x ^= x.wrapping_mul(0x0552_6C56);
+    x ^= x.wrapping_mul(0x53A2_2864);
+    x.reverse_bits()
 }
 
 /// A well mixed 64-bit number: the finaliser of Steele, Lea & Flood 2014 (`SplitMix`).
@@ -270,14 +321,13 @@ mod tests {
         }
     }
 
-    // Six standard errors of 4096 fair coins; of the 630 pairs of levels none may be further off.
+    // Six standard errors of 4096 fair coins; of the 496 pairs of levels none may be further off.
     #[test]
     fn flips_of_different_levels_are_independent() {
-        for digits in [0, u32::MAX, 0x9A3C_51E7] {
-            let mut agreements = [[0i32; 36]; 36];
+        for digits in [0, u32::MAX, 0x9A3C_51E7_u32] {
+            let mut agreements = [[0i32; BITS]; BITS];
             for seed in 0..4096 {
-                let value = (scrambled(digits, mixed(seed)) * 2f64.powi(36)) as u64;
-                let flips = value ^ u64::from(digits) << 4;
+                let flips = scrambled(digits.reverse_bits(), mixed(seed)) ^ digits;
                 for (a, row) in agreements.iter_mut().enumerate() {
                     for (b, count) in row.iter_mut().enumerate() {
                         *count += i32::from(flips >> a & 1 == flips >> b & 1);
@@ -288,6 +338,37 @@ mod tests {
                 for (b, count) in row.iter().enumerate().filter(|(b, _)| *b != a) {
                     assert!((count - 2048).abs() < 6 * 32, "{a} {b}: {count}");
                 }
+            }
+        }
+    }
+
+    // What makes a scrambling nested: points that share their first digits share their first flips,
+    // and the flip of a digit does not depend on the digit itself or on any behind it.
+    #[test]
+    fn flips_depend_on_the_digits_before_alone() {
+        for trial in 0..2000_u64 {
+            let [seed, digits, other] = [1, 2, 3].map(|k| mixed(3 * trial + k));
+            let shared = (trial % 32) as u32;
+            let behind = (u64::from(u32::MAX) >> shared) as u32;
+            let one = digits as u32;
+            let two = (one & !behind) | (other as u32 & behind);
+            let flips = [one, two].map(|digits| scrambled(digits.reverse_bits(), seed) ^ digits);
+            // The digits that are shared, and the first that is not.
+            let alike = !(behind >> 1);
+            assert_eq!(flips[0] & alike, flips[1] & alike, "{shared}");
+        }
+    }
+
+    #[test]
+    fn a_walk_meets_every_point() {
+        let sobol = Sobol::new(70, 5);
+        for start in [0, 1, 77, 1 << 20, u32::MAX - 3] {
+            let mut walk = sobol.walk(start);
+            let (mut walked, mut alone) = ([0.0; 70], [0.0; 70]);
+            for step in 0..40 {
+                walk.next_into(&mut walked);
+                sobol.point(start.wrapping_add(step), &mut alone);
+                assert_eq!(walked, alone, "{start} {step}");
             }
         }
     }

@@ -99,6 +99,12 @@ impl Surface {
         value
     }
 
+    /// The coefficients: `y₀`, the pairs of `a_i` and `b_i`, and the `c_ij` in the order of the pairs
+    /// (0 1), (0 2), …, (1 2), ….
+    pub fn coefficients(&self) -> (f64, &[[f64; 2]], &[f64]) {
+        (self.centre, &self.along, &self.twist)
+    }
+
     fn part(&self, variable: usize, x: f64) -> f64 {
         let [slope, curvature] = self.along[variable];
         x * (slope + curvature * x)

@@ -3,7 +3,7 @@
 use crate::{
     catalog::MaterialKind,
     diagnostic::Caution,
-    joint::{Engagement, Fastener, Friction, Tightening, TorqueTightening},
+    joint::{Engagement, Fastener, Friction, LockWasher, Tightening, TorqueTightening},
     preload::{
         engagement::engagement_check,
         force::{Place, force_band},
@@ -11,6 +11,10 @@ use crate::{
         strength::seat_pressure,
     },
 };
+
+mod service;
+
+pub use service::{opened, over_in_service, parts, springs_flat};
 
 /// Strength use at nominal below which a wrong size or unit is likelier than a choice.
 const LOW_USE: f64 = 0.15;
@@ -45,24 +49,10 @@ pub fn group_cautions(group: &Group<'_>) -> Vec<Caution> {
     found.extend(torque_size(group));
     found.extend(seats(group));
     found.extend(isolating(group));
+    found.extend(split_washer(group));
     found.extend(threads(group));
     found.extend(tightening(group));
     found
-}
-
-/// Caution for a bolt whose balance of losses is negative, N.
-pub fn opened(name: &str, balance: f64) -> Option<Caution> {
-    (balance < 0.0).then(|| {
-        caution(
-            "preload/negative-service-force",
-            format!(
-                "{name}: settling, relaxation and temperature take {:.0} N more than the bolt was tightened to; \
-                 the joint is taken as open there (0 N). Use a longer or less stiff bolt, a higher preload or \
-                 matched expansion.",
-                -balance
-            ),
-        )
-    })
 }
 
 /// Cautions that belong to a printed torque window.
@@ -225,6 +215,20 @@ fn seats(group: &Group<'_>) -> Vec<Caution> {
     found
 }
 
+/// What a split spring washer does not do.
+fn split_washer(group: &Group<'_>) -> Option<Caution> {
+    (group.fastener.lock_washer == LockWasher::Split).then(|| {
+        caution(
+            "preload/split-washer",
+            format!(
+                "{}: a split spring washer is flat at a small part of the clamp force and then a hard, narrow seat; it adds \
+                 nothing to the force kept, and nothing is counted. Disc springs and a longer bolt keep force.",
+                group.name
+            ),
+        )
+    })
+}
+
 /// What isolating washers do to the clamp.
 fn isolating(group: &Group<'_>) -> Vec<Caution> {
     let Group { name, fastener, .. } = group;
@@ -282,16 +286,24 @@ fn threads(group: &Group<'_>) -> Vec<Caution> {
             ),
         ));
     }
-    if let Engagement::Insert { .. } = fastener.engagement {
-        let text = if fastener.flange.is_some() {
-            format!("{name}: pull-out of the insert is not checked; use the maker's pull-out load.")
-        } else {
-            format!(
-                "{name}: pull-out of the insert and an insert standing proud of the face are not checked; use the \
-                 maker's pull-out load and seat it below the face, or state its `flange` and how `proud` it is."
-            )
-        };
-        found.push(caution("preload/insert", text));
+    let hold = &fastener.insert_hold;
+    let held = hold.pull_out.is_some() || hold.outer_diameter.is_some();
+    let text = match (fastener.engagement, held, fastener.flange.is_some()) {
+        (Engagement::Insert { .. }, false, true) => {
+            "pull-out of the insert is not checked; state the maker's `pull_out` load."
+        }
+        (Engagement::Insert { .. }, false, false) => {
+            "pull-out of the insert and an insert standing proud of the face are not checked; state the maker's \
+             `pull_out` load and seat it below the face, or state its `flange` and how `proud` it is."
+        }
+        (Engagement::Insert { .. }, true, false) => {
+            "an insert standing proud of the face is not checked; seat it below the face, or state its `flange` and how \
+             `proud` it is."
+        }
+        _ => "",
+    };
+    if !text.is_empty() {
+        found.push(caution("preload/insert", format!("{name}: {text}")));
     }
     let stainless = ["304", "316", "a2", "a4", "18-8"]
         .iter()

@@ -188,6 +188,19 @@ pub fn strip_width(thread: &Thread, strength: PairStrength) -> f64 {
         .min(widths.nut * strength.plate_shear)
 }
 
+/// Shear area of the plate's thread around an insert, per engaged length, m.
+///
+/// ```text
+/// A/L = 0.5 π D
+/// ```
+///
+/// Half of the cylinder over the insert's outer thread; a full 60° profile without play keeps 0.87 of it
+/// (½ + 0.6495/√3), tolerances and thread ends take the rest.
+/// Source: common practice, no source. Checked: `insert_of_a_larger_thread_holds_more`.
+pub fn parent_width(outer_diameter: f64) -> f64 {
+    0.5 * PI * outer_diameter
+}
+
 /// Engaged length by the rule of thumb, in diameters: steel 1, iron and copper alloys 1.5, light alloys 2.
 ///
 /// Families are those of the catalogue; an unknown one is taken as a light alloy.

@@ -5,10 +5,11 @@ use std::f64::consts::PI;
 use crate::{
     catalog::{Datum, Grade, Material, MaterialKind, Status, Thread},
     joint::{
-        Bounds, Compliance, ConeRule, ConeShape, Contact, Engagement, FaceFriction, Fastener,
-        Finish, Friction, Hardware, HeadModel, Joint, Law, Medium, Outline, Plate, Seat, Service,
-        Sink, Source, Tightening, TorqueTightening, Zone,
+        Bolts, Bounds, Compliance, ConeRule, ConeShape, Contact, Engagement, FaceFriction,
+        Fastener, Finish, Friction, Hardware, HeadModel, InsertHold, Joint, Law, LockWasher,
+        Medium, Outline, Plate, Seat, Service, Sink, Source, Tightening, TorqueTightening, Zone,
     },
+    numerics::distribution::Shape,
 };
 
 /// Metric thread by its formulas, from diameter and pitch in m.
@@ -31,6 +32,7 @@ pub fn datum(value: f64) -> Datum {
     Datum {
         value,
         range: None,
+        shape: Shape::Uniform,
         status: Status::Judgement,
         source: String::new(),
     }
@@ -53,11 +55,7 @@ pub fn grade() -> Grade {
 
 /// 7 N·m, 5 %, class B friction, hexagon head in a medium hole.
 pub fn m6() -> Fastener {
-    let friction = Bounds {
-        low: 0.08,
-        nominal: 0.12,
-        high: 0.16,
-    };
+    let friction = Bounds::uniform([0.08, 0.12, 0.16]);
     let seat = Seat {
         inner_radius: 3.3e-3,
         outer_radius: 4.44e-3,
@@ -84,6 +82,8 @@ pub fn m6() -> Fastener {
             tolerance: 0.05,
             running: 0.0,
             running_stated: false,
+            tool: Shape::Uniform,
+            running_spread: None,
             friction: Friction::Coefficients {
                 thread: friction,
                 head: friction,
@@ -94,6 +94,10 @@ pub fn m6() -> Fastener {
         head_plate: 0,
         shank_path: true,
         isolating: None,
+        axial_load: None,
+        disc_springs: None,
+        lock_washer: LockWasher::None,
+        insert_hold: InsertHold::default(),
         places: vec![[20e-3, 20e-3], [60e-3, 20e-3]],
     }
 }
@@ -123,6 +127,7 @@ pub fn aluminium() -> Material {
         density: None,
         hardness: None,
         microhardness: None,
+        microhardness_spread: None,
         yield_strength: Some(datum(276e6)),
         bearing_limit: Some(datum(400e6)),
         note: None,
@@ -142,6 +147,7 @@ fn plate(name: &str, thickness: f64) -> Plate {
             roughness: Bounds::exact(1e-6),
             slope: 0.12,
             slope_factor: 1.5,
+            slope_spread: None,
             coating: None,
         },
         flatness: None,
@@ -153,6 +159,7 @@ fn plate(name: &str, thickness: f64) -> Plate {
         feet: None,
         ribs: Vec::new(),
         sandwich: None,
+        flexural_strength: None,
     }
 }
 
@@ -177,6 +184,7 @@ pub fn joint() -> Joint {
         fasteners: vec![m6()],
         contact: Contact {
             law: Law::ElasticPlastic,
+            law_factor: 1.15,
             cone: ConeRule::Fitted,
             shape: ConeShape::Fitted,
             emissivity: vec![[0.1; 2]],
@@ -189,6 +197,8 @@ pub fn joint() -> Joint {
         losses: None,
         cost: None,
         missing: Vec::new(),
+        uncertain: Vec::new(),
+        bolts_scatter: Bolts::ONE_LOT,
         assumptions: Vec::new(),
     }
 }

@@ -8,11 +8,7 @@ use crate::{
 /// Thread friction taken for the torsion of a bolt whose preload is given: class B of VDI 2230.
 ///
 /// The class spans 0.08 to 0.16; the middle is taken as nominal. The caller records the assumption.
-pub const CLASS_B: Bounds = Bounds {
-    low: 0.08,
-    nominal: 0.12,
-    high: 0.16,
-};
+pub const CLASS_B: Bounds = Bounds::uniform([0.08, 0.12, 0.16]);
 
 /// A place within the scatter of tightening; each number runs from −1 through 0 (nominal) to +1.
 #[derive(Clone, Copy, Debug, Default, PartialEq)]
@@ -23,6 +19,8 @@ pub struct Place {
     pub torque: f64,
     /// From lowest to highest given preload, or through the scatter of the tightening method.
     pub preload: f64,
+    /// From lowest to highest running torque.
+    pub running: f64,
 }
 
 impl Place {
@@ -31,20 +29,23 @@ impl Place {
         friction: 0.0,
         torque: 0.0,
         preload: 0.0,
+        running: 0.0,
     };
 
-    /// Where the force is lowest: highest friction, lower tolerance.
+    /// Where the force is lowest: highest friction and running torque, lower tolerance.
     pub const LOWEST_FORCE: Self = Self {
         friction: 1.0,
         torque: -1.0,
         preload: -1.0,
+        running: 1.0,
     };
 
-    /// Where the force is highest: lowest friction, upper tolerance.
+    /// Where the force is highest: lowest friction and running torque, upper tolerance.
     pub const HIGHEST_FORCE: Self = Self {
         friction: -1.0,
         torque: 1.0,
         preload: 1.0,
+        running: -1.0,
     };
 }
 
@@ -81,11 +82,11 @@ pub fn clamp_force(fastener: &Fastener, place: Place) -> f64 {
 /// Low is highest friction with the lower tool tolerance, high lowest friction with the upper; with a
 /// method scatter s, F(1 ± s); with a given preload its own bounds.
 pub fn force_band(fastener: &Fastener) -> Bounds {
-    Bounds {
-        low: clamp_force(fastener, Place::LOWEST_FORCE),
-        nominal: clamp_force(fastener, Place::NOMINAL),
-        high: clamp_force(fastener, Place::HIGHEST_FORCE),
-    }
+    Bounds::uniform([
+        clamp_force(fastener, Place::LOWEST_FORCE),
+        clamp_force(fastener, Place::NOMINAL),
+        clamp_force(fastener, Place::HIGHEST_FORCE),
+    ])
 }
 
 /// Torque that twists the bolt during assembly, N m.
@@ -110,7 +111,11 @@ pub fn wrench_torque(tightening: &TorqueTightening, place: Place) -> f64 {
 pub fn tool_factor(tightening: &TorqueTightening, place: Place) -> f64 {
     match tightening.scatter {
         Some(_) => 1.0,
-        None => 1.0 + tightening.tolerance * place.torque,
+        None => {
+            let tolerance = tightening.tolerance;
+            let ends = [1.0 - tolerance, 1.0, 1.0 + tolerance];
+            tightening.tool.at(ends, place.torque)
+        }
     }
 }
 
@@ -148,7 +153,9 @@ pub fn balance(fastener: &Fastener, tightening: &TorqueTightening, place: Place)
             Some(scatter) => scaled(&turning, levers, 1.0 + scatter * place.preload),
             None => levers,
         },
-        running: tightening.running,
+        running: tightening
+            .running_spread
+            .map_or(tightening.running, |spread| spread.at(place.running)),
     }
 }
 
@@ -204,11 +211,11 @@ impl Spread {
     /// minimum from memory of NASA-STD-5020.
     /// Checked: `worked_example_of_nasa_practice`.
     pub fn about(&self, nominal: f64) -> Bounds {
-        Bounds {
-            low: nominal * (1.0 - self.scatter) * (1.0 - self.tolerance) * (1.0 - self.relaxation),
+        Bounds::uniform([
+            nominal * (1.0 - self.scatter) * (1.0 - self.tolerance) * (1.0 - self.relaxation),
             nominal,
-            high: nominal * (1.0 + self.scatter) * (1.0 + self.tolerance),
-        }
+            nominal * (1.0 + self.scatter) * (1.0 + self.tolerance),
+        ])
     }
 
     /// Tightening factor of a scatter alone, 1: `α_A = F_max/F_min = (1 + Γ)/(1 − Γ)`.
@@ -284,11 +291,7 @@ mod tests {
 
     #[test]
     fn given_preload_keeps_its_bounds() {
-        let bounds = Bounds {
-            low: 4e3,
-            nominal: 5e3,
-            high: 7e3,
-        };
+        let bounds = Bounds::uniform([4e3, 5e3, 7e3]);
         let mut bolt = m6();
         bolt.tightening = Tightening::Preload(bounds);
         assert_eq!(force_band(&bolt), bounds);
@@ -367,7 +370,7 @@ mod tests {
                 tightening.scatter = scatter;
             });
             let band = force_band(&bolt);
-            let force = clamp_force(&bolt, Place { friction, torque, preload });
+            let force = clamp_force(&bolt, Place { friction, torque, preload, running: 0.0 });
             prop_assert!(band.low <= band.nominal && band.nominal <= band.high);
             prop_assert!(band.low * (1.0 - 1e-12) <= force && force <= band.high * (1.0 + 1e-12));
         }

@@ -4,7 +4,9 @@ use crate::{
     catalog::{Datum, Material},
     joint::{Engagement, Fastener, Joint, Tightening},
     preload::{
-        engagement::{PairStrength, ThreadedPart, plate_shear_strength, strip_width},
+        brittle::seat_limit,
+        engagement::{PairStrength, ThreadedPart, parent_width, plate_shear_strength, strip_width},
+        external::stress_in_service,
         force::{Place, balance, clamp_force, force_band, tool_factor, torsion},
         strength::{
             Load, TorsionRule, Twist, force_at_stress, proof_load, seat_pressure, von_mises,
@@ -24,6 +26,8 @@ pub struct Supports {
     pub head_limit: Option<f64>,
     /// Permissible pressure of the plate under the nut, Pa, where known.
     pub nut_limit: Option<f64>,
+    /// Mean pressure under head and nut at which a brittle plate of stated strength is used up, Pa.
+    pub brittle: [Option<f64>; 2],
     /// The far plate as the partner of a tapped thread or an insert.
     pub far: ThreadedPart,
 }
@@ -37,6 +41,7 @@ impl Supports {
         Self {
             head_limit: value(&head.bearing_limit),
             nut_limit: value(&far.bearing_limit),
+            brittle: [None; 2],
             far: ThreadedPart {
                 family: far.family.clone(),
                 shear_strength: value(&far.yield_strength)
@@ -47,14 +52,36 @@ impl Supports {
 
     /// Supports of a fastener in its joint.
     pub fn in_joint(joint: &Joint, fastener: &Fastener) -> Self {
-        let head = &joint.plates[fastener.head_plate].material;
-        let far = if fastener.head_plate == 0 {
-            &joint.cold().material
-        } else {
-            &joint.warm().material
-        };
-        Self::of(head, far)
+        let last = joint.plates.len() - 1;
+        let [head, far] = [fastener.head_plate, last - fastener.head_plate];
+        let material = |plate: usize| &joint.plates[plate].material;
+        let brittle = |plate: usize| seat_limit(&joint.plates[plate], unevenness(joint, plate));
+        Self {
+            brittle: [head, far].map(brittle),
+            ..Self::of(material(head), material(far))
+        }
     }
+}
+
+/// Out-of-flatness that a plate is pressed flat from, both faces of its interface together, m; none where
+/// neither states any.
+///
+/// A bow or a flatness, whichever each face states; of a plate between others the larger side.
+pub fn unevenness(joint: &Joint, plate: usize) -> Option<f64> {
+    let stated = |plate: usize| {
+        let plate = &joint.plates[plate];
+        plate.bow.map(f64::abs).or(plate.flatness)
+    };
+    let sides = [plate.checked_sub(1), Some(plate)];
+    let heights = sides
+        .into_iter()
+        .flatten()
+        .filter(|side| side + 1 < joint.plates.len());
+    let heights = heights.filter_map(|side| match (stated(side), stated(side + 1)) {
+        (None, None) => None,
+        (one, other) => Some(one.unwrap_or(0.0) + other.unwrap_or(0.0)),
+    });
+    heights.max_by(f64::total_cmp)
 }
 
 /// The limit of combined stress.
@@ -67,6 +94,17 @@ pub const HEAD_PRESSURE: &str = "pressure under the head";
 pub const NUT_PRESSURE: &str = "pressure under the nut";
 /// The limit of thread stripping.
 pub const STRIPPING: &str = "thread stripping";
+
+/// The limit of the stated pull-out of an insert.
+pub const PULL_OUT: &str = "pull-out of the insert";
+/// The limit of shear around an insert.
+pub const PARENT: &str = "shear around the insert";
+/// The limit of a brittle plate under a seat.
+pub const BRITTLE: &str = "tension beside the seat of a brittle plate";
+/// The limit of stress in service.
+pub const IN_SERVICE: &str = "stress in service at yield";
+/// The limit of the proof load in service.
+pub const PROOF_IN_SERVICE: &str = "proof load in service";
 
 /// A limit and how far it is used at the highest force.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -111,55 +149,91 @@ pub fn limits(fastener: &Fastener, supports: &Supports) -> Vec<LimitUse> {
     let force = force_band(fastener).high;
     let mut found = Vec::new();
     if let Some([_, high]) = strength_use(fastener) {
-        found.push(limit_use(STRESS, high, UTILISATION));
+        found.push(LimitUse::new(STRESS, high, UTILISATION));
     }
     found.extend(
         force_limits(fastener, supports)
             .into_iter()
-            .map(|(name, most)| limit_use(name, force / most, 1.0)),
+            .map(|(name, most)| LimitUse::new(name, force / most, 1.0)),
     );
     found
 }
 
-/// Largest nominal torque at which every limit of [`limits`] holds, N m, and the limit that ends it.
+/// The limits of a bolt under a force in service, N: equivalent stress at yield with half the torsion of
+/// tightening, and proof load.
+pub fn limits_in_service(fastener: &Fastener, force: f64) -> Vec<LimitUse> {
+    let grade = &fastener.grade;
+    let load = Load {
+        force,
+        torsion: torsion(fastener, worst(fastener)),
+    };
+    let stress = grade.yield_strength.as_ref().map(|strength| {
+        let used = stress_in_service(&fastener.thread, load) / strength.value;
+        LimitUse::new(IN_SERVICE, used, 1.0)
+    });
+    let proof = grade.proof.as_ref().map(|proof| {
+        let most = proof_load(&fastener.thread, proof.value);
+        LimitUse::new(PROOF_IN_SERVICE, force / most, 1.0)
+    });
+    stress.into_iter().chain(proof).collect()
+}
+
+/// Largest nominal torque of each limit that can be told, N m.
 ///
 /// ```text
 /// T = (F_max lever(μ_low) + T_run) / (1 + t)
 /// ```
 ///
-/// `F_max` is the smallest of: equivalent stress 0.9 `R_p` with its torsion, proof load, seat pressures and
-/// stripping; at lowest friction and upper tool tolerance `t`. None when the preload is given, the grade has
-/// no yield strength, or the running torque alone exceeds the stress.
+/// `F_max` is the force at which the limit stands: equivalent stress 0.9 `R_p` with its torsion, proof load,
+/// seat pressures, stripping, the hold of an insert; at lowest friction and upper tool tolerance `t`. Empty
+/// when the preload is given.
+pub fn limit_torques(fastener: &Fastener, supports: &Supports) -> Vec<(&'static str, f64)> {
+    let Tightening::Torque(tightening) = &fastener.tightening else {
+        return Vec::new();
+    };
+    let place = Place::HIGHEST_FORCE;
+    let balance = balance(fastener, tightening, place);
+    let twist = Twist {
+        lever: balance.levers.thread,
+        running: balance.running,
+    };
+    let by_stress = fastener.grade.yield_strength.as_ref().map(|strength| {
+        let most = UTILISATION * strength.value;
+        // A running torque that alone passes the stress leaves nothing.
+        (
+            STRESS,
+            force_at_stress(&fastener.thread, twist, most).unwrap_or(f64::NEG_INFINITY),
+        )
+    });
+    let forces = by_stress
+        .into_iter()
+        .chain(force_limits(fastener, supports));
+    forces
+        .map(|(name, force)| {
+            let torque = balance.torque(force) / tool_factor(tightening, place);
+            (name, torque.max(0.0))
+        })
+        .collect()
+}
+
+/// Largest nominal torque at which every limit of [`limits`] holds, N m, and the limit that ends it: the
+/// smallest of [`limit_torques`].
 ///
-/// Valid: an estimate from minimum strengths, no torque card; external load, fatigue and slip are not in it.
+/// None when the preload is given, the grade has no yield strength, or the running torque alone exceeds the
+/// stress.
+///
+/// Valid: an estimate from minimum strengths, no torque card; fatigue and slip are not in it.
 /// Source: VDI 2230-1 (90 % of yield), the limits by their own functions.
 /// Checked: `largest_torque_stands_exactly_at_its_limit`.
 pub fn largest_torque(fastener: &Fastener, supports: &Supports) -> Option<(f64, &'static str)> {
-    let Tightening::Torque(tightening) = &fastener.tightening else {
-        return None;
-    };
-    let yield_strength = fastener.grade.yield_strength.as_ref()?.value;
-    let place = Place::HIGHEST_FORCE;
-    let balance = balance(fastener, tightening, place);
-    let by_stress = force_at_stress(
-        &fastener.thread,
-        Twist {
-            lever: balance.levers.thread,
-            running: balance.running,
-        },
-        UTILISATION * yield_strength,
-    )?;
-    let (force, name) = force_limits(fastener, supports).into_iter().fold(
-        (by_stress, STRESS),
-        |(force, name), (other, most)| {
-            if most < force {
-                (most, other)
-            } else {
-                (force, name)
-            }
-        },
-    );
-    Some((balance.torque(force) / tool_factor(tightening, place), name))
+    fastener.grade.yield_strength.as_ref()?;
+    let torques = limit_torques(fastener, supports);
+    let least = torques
+        .into_iter()
+        .min_by(|one, other| one.1.total_cmp(&other.1));
+    least
+        .filter(|(_, torque)| *torque > 0.0)
+        .map(|(name, torque)| (torque, name))
 }
 
 /// Largest force of each limit that knows no torsion, N.
@@ -178,9 +252,30 @@ fn force_limits(fastener: &Fastener, supports: &Supports) -> Vec<(&'static str, 
     if let (Some(limit), Some(seat)) = (supports.nut_limit, &fastener.nut_seat) {
         found.push((NUT_PRESSURE, limit / seat_pressure(seat, 1.0)));
     }
-    if let (Engagement::Tapped { length } | Engagement::Insert { length }, Some(plate_shear)) =
+    let seats = [Some(&fastener.head_seat), fastener.nut_seat.as_ref()];
+    for (seat, limit) in seats.into_iter().zip(supports.brittle) {
+        if let (Some(seat), Some(limit)) = (seat, limit) {
+            found.push((BRITTLE, limit / seat_pressure(seat, 1.0)));
+        }
+    }
+    found.extend(threads(fastener, supports));
+    found
+}
+
+/// Largest forces of what holds the far end, N: a tapped thread, or an insert and what is around it.
+fn threads(fastener: &Fastener, supports: &Supports) -> Vec<(&'static str, f64)> {
+    let mut found = Vec::new();
+    let hold = &fastener.insert_hold;
+    found.extend(hold.pull_out.map(|force| (PULL_OUT, force)));
+    let (Engagement::Tapped { length } | Engagement::Insert { length }, Some(plate_shear)) =
         (fastener.engagement, supports.far.shear_strength)
-    {
+    else {
+        return found;
+    };
+    let thread = &fastener.thread;
+    if let (Engagement::Insert { .. }, Some(outer)) = (fastener.engagement, hold.outer_diameter) {
+        found.push((PARENT, length * parent_width(outer) * plate_shear));
+    } else if hold.pull_out.is_none() {
         let strength = PairStrength {
             bolt_tensile: fastener.grade.tensile.value,
             plate_shear,
@@ -190,13 +285,16 @@ fn force_limits(fastener: &Fastener, supports: &Supports) -> Vec<(&'static str, 
     found
 }
 
-fn limit_use(name: &'static str, used: f64, allowed: f64) -> LimitUse {
-    LimitUse {
-        name,
-        used,
-        allowed,
-        // The largest torque stands on its limit: rounding must not push it over.
-        passes: used <= allowed * (1.0 + 1e-9),
+impl LimitUse {
+    /// A limit, what is used of it and what may be used.
+    pub fn new(name: &'static str, used: f64, allowed: f64) -> Self {
+        Self {
+            name,
+            used,
+            allowed,
+            // The largest torque stands on its limit: rounding must not push it over.
+            passes: used <= allowed * (1.0 + 1e-9),
+        }
     }
 }
 
@@ -233,11 +331,7 @@ mod tests {
 
     #[test]
     fn largest_torque_stands_exactly_at_its_limit() {
-        let nut_factor = Friction::NutFactor(Bounds {
-            low: 0.12,
-            nominal: 0.16,
-            high: 0.2,
-        });
+        let nut_factor = Friction::NutFactor(Bounds::uniform([0.12, 0.16, 0.2]));
         let mut soft = supports();
         soft.head_limit = Some(150e6);
         let mut tapped = m6();

@@ -1,5 +1,7 @@
 //! What a clamp force loses after tightening: settling, relaxation, and what temperature adds or takes.
 
+use crate::{numerics::roots, preload::springs::SpringStack};
+
 /// Settling of one contact of each kind, m.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Settling {
@@ -110,8 +112,7 @@ impl Compliance {
     /// Valid: elastic, moduli as at room temperature.
     /// Source: VDI 2230-1. Checked: `warming_aluminium_under_stainless_adds_741_newtons`.
     pub fn temperature_gain(&self, plates: &[Part], bolt: Part) -> f64 {
-        let growth = plates.iter().map(Part::growth).sum::<f64>() - bolt.growth();
-        growth / (self.bolt + self.plates)
+        growth(plates, bolt) / (self.bolt + self.plates)
     }
 
     /// Load factor Φ of a load that enters under head and nut, 1: `δ_P/(δ_S + δ_P)`.
@@ -120,6 +121,11 @@ impl Compliance {
     pub fn load_factor(&self) -> f64 {
         self.plates / (self.bolt + self.plates)
     }
+}
+
+/// Growth of the clamped parts over that of the bolt, m: `Σ ε_P l_P − ε_S l_K`.
+pub fn growth(plates: &[Part], bolt: Part) -> f64 {
+    plates.iter().map(Part::growth).sum::<f64>() - bolt.growth()
 }
 
 /// A part that grows with temperature.
@@ -137,39 +143,103 @@ impl Part {
     }
 }
 
+/// What gives under the clamp force: bolt, clamped parts and disc springs.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Elasticity {
+    /// Bolt and clamped parts.
+    pub compliance: Compliance,
+    /// Disc springs under head or nut.
+    pub springs: Option<SpringStack>,
+}
+
+impl Elasticity {
+    /// Force after the clamped stack has grown, N; negative when the joint would open.
+    ///
+    /// ```text
+    /// (δ_S + δ_P) F + s(F) = (δ_S + δ_P) F₀ + s(F₀) + Δl
+    /// ```
+    ///
+    /// | symbol | quantity | SI unit | field |
+    /// |---|---|---|---|
+    /// | `δ_S`, `δ_P` | compliance of bolt and plates | m/N | `compliance` |
+    /// | `s(F)` | deflection of the springs, none once flat | m | `springs` |
+    /// | `Δl` | growth of the clamped stack over that of the bolt, settling negative | m | `growth` |
+    ///
+    /// Without springs `F = F₀ + Δl/(δ_S + δ_P)`.
+    ///
+    /// Valid: elastic; the springs follow without friction.
+    /// Source: compatibility of the clamped stack, VDI 2230-1 with the curve of the springs added.
+    /// Checked: `springs_follow_what_a_stiff_bolt_loses`, `a_flat_stack_is_no_longer_a_spring`.
+    pub fn after(&self, force: f64, growth: f64) -> f64 {
+        let stiff = self.compliance.bolt + self.compliance.plates;
+        let Some(springs) = &self.springs else {
+            return force + growth / stiff;
+        };
+        let length = |force: f64| stiff * force + springs.deflection(force);
+        let wanted = length(force) + growth;
+        // The length rises at least as fast as that of the stiff parts and at most as fast as with
+        // the springs' least stiffness, so that the stiff answer bounds the way from the start.
+        let [low, high] = if growth < 0.0 {
+            [force + growth / stiff, force]
+        } else {
+            [force, force + growth / stiff]
+        };
+        roots::bracketed(
+            |force| length(force) - wanted,
+            low,
+            high,
+            1e-12 * high.abs(),
+        )
+        .unwrap_or(f64::NAN)
+    }
+
+    /// Compliance on the bolt's side at a force, m/N: bolt and springs in series.
+    pub fn bolt_side(&self, force: f64) -> f64 {
+        let springs = self
+            .springs
+            .map_or(0.0, |springs| springs.compliance(force));
+        self.compliance.bolt + springs
+    }
+}
+
 /// What parts the service force from the assembly force.
 #[derive(Clone, Copy, Debug, Default, PartialEq)]
 pub struct Losses {
-    /// Force lost by settling `F_Z`, N.
+    /// Settling over all contacts of one bolt, m.
     pub settling: f64,
     /// Short-term relaxation as a fraction of the assembly force.
     pub relaxation: f64,
-    /// Force that temperature adds, N.
-    pub temperature: f64,
+    /// What is lost while the other bolts are tightened, as a fraction of the assembly force.
+    pub interaction: f64,
+    /// Growth of the clamped stack over that of the bolt with temperature, m.
+    pub growth: f64,
 }
 
 impl Losses {
     /// Balance of the service force, N; negative when the joint would open.
     ///
     /// ```text
-    /// F = F_assembly (1 − r) − F_Z + ΔF_temperature
+    /// F = F_assembly (1 − r)(1 − i), then Δl = growth − f_Z by `Elasticity::after`
     /// ```
     ///
     /// Source: the sum of VDI 2230-1 and of NASA preload practice; 5 % short-term relaxation from memory.
-    pub fn balance(&self, assembly_force: f64) -> f64 {
-        assembly_force * (1.0 - self.relaxation) - self.settling + self.temperature
+    /// Checked: `open_joint_carries_nothing`.
+    pub fn balance(&self, assembly_force: f64, elasticity: &Elasticity) -> f64 {
+        let kept = assembly_force * (1.0 - self.relaxation) * (1.0 - self.interaction);
+        elasticity.after(kept, self.growth - self.settling)
     }
 }
 
 /// Clamp force in service, N; 0 where the balance of losses is negative: the joint is then open, and the
 /// caller says so with [`crate::preload::opened`].
-pub fn force_in_service(assembly_force: f64, losses: &Losses) -> f64 {
-    losses.balance(assembly_force).max(0.0)
+pub fn force_in_service(assembly_force: f64, (losses, elasticity): (&Losses, &Elasticity)) -> f64 {
+    losses.balance(assembly_force, elasticity).max(0.0)
 }
 
 #[cfg(test)]
 mod tests {
     use super::*;
+    use crate::preload::springs::Disc;
 
     #[test]
     fn two_plates_with_a_nut_settle_11_micrometres() {
@@ -191,15 +261,82 @@ mod tests {
         }
     }
 
+    /// A stiff M6: bolt 5 and plates 1 nm/N.
+    const STIFF: Elasticity = Elasticity {
+        compliance: Compliance {
+            bolt: 5e-9,
+            plates: 1e-9,
+        },
+        springs: None,
+    };
+
+    /// Four sets of one disc 16 × 8.2 × 0.9 mm, cone 0.35 mm: flat at 1.32 kN.
+    fn sprung() -> Elasticity {
+        Elasticity {
+            springs: Some(SpringStack {
+                disc: Disc {
+                    outer_diameter: 16e-3,
+                    inner_diameter: 8.2e-3,
+                    thickness: 0.9e-3,
+                    cone_height: 0.35e-3,
+                    youngs_modulus: 206e9,
+                    poisson: 0.3,
+                },
+                parallel: 1,
+                series: 4,
+            }),
+            ..STIFF
+        }
+    }
+
     #[test]
     fn open_joint_carries_nothing() {
+        // 5.4 µm of settling over 6 nm/N is 900 N, 1.2 µm of shrinkage 200 N.
         let losses = Losses {
-            settling: 900.0,
+            settling: 5.4e-6,
             relaxation: 0.05,
-            temperature: -200.0,
+            interaction: 0.0,
+            growth: -1.2e-6,
         };
-        assert!((losses.balance(1000.0) + 150.0).abs() < 1e-9);
-        assert!(force_in_service(1000.0, &losses).abs() < f64::EPSILON);
-        assert!((force_in_service(2000.0, &losses) - 800.0).abs() < 1e-9);
+        assert!((losses.balance(1000.0, &STIFF) + 150.0).abs() < 1e-9);
+        assert!(force_in_service(1000.0, (&losses, &STIFF)).abs() < f64::EPSILON);
+        assert!((force_in_service(2000.0, (&losses, &STIFF)) - 800.0).abs() < 1e-9);
+        let neighbours = Losses {
+            interaction: 0.1,
+            ..losses
+        };
+        // 2000 · 0.95 · 0.9 − 900 − 200.
+        assert!((force_in_service(2000.0, (&neighbours, &STIFF)) - 610.0).abs() < 1e-9);
+    }
+
+    #[test]
+    fn springs_follow_what_a_stiff_bolt_loses() {
+        // 6 µm take 1000 N of a stiff bolt; the stack of springs gives about 1 µm per newton, so that a
+        // few newtons are lost. What is left must close the balance of lengths.
+        let sprung = sprung();
+        let (before, lost) = (1000.0, -6e-6);
+        assert!(STIFF.after(before, lost).abs() < 1e-9);
+        let after = sprung.after(before, lost);
+        let springs = sprung.springs.expect("the stack of this test");
+        let lengths =
+            6e-9 * (after - before) + springs.deflection(after) - springs.deflection(before);
+        assert!((lengths - lost).abs() < 1e-14, "{lengths}");
+        // By the tangent alone: 6 µm over 6 nm/N and the springs' own compliance.
+        let tangent = before + lost / (6e-9 + springs.compliance(before));
+        assert!((after - tangent).abs() < 0.1, "{after} {tangent}");
+        assert!(after > 985.0);
+        // And back.
+        assert!((sprung.after(after, -lost) - before).abs() < 1e-6);
+    }
+
+    #[test]
+    fn a_flat_stack_is_no_longer_a_spring() {
+        let sprung = sprung();
+        let flat = sprung.springs.expect("the stack of this test").flat_force();
+        // Well above flat the loss is that of the stiff bolt; through flat the rest is the springs'.
+        assert!((sprung.after(flat + 2000.0, -6e-6) - (flat + 1000.0)).abs() < 1e-6);
+        let through = sprung.after(flat + 500.0, -6e-6);
+        assert!(through < flat && through > flat - 10.0, "{through} {flat}");
+        assert!((sprung.bolt_side(flat + 1.0) - 5e-9).abs() < 1e-20);
     }
 }

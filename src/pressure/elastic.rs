@@ -107,6 +107,13 @@ pub fn solve_from(problem: &Problem, previous: &Field) -> Result<Field, Failure>
     solve_started(problem, &Start::Field(previous))
 }
 
+/// Solves the contact from where a field of a coarser grid touches.
+///
+/// The grid only decides how many steps it takes.
+pub fn solve_from_coarser(problem: &Problem, coarser: &Field) -> Result<Field, Failure> {
+    solve_started(problem, &Start::Coarser(coarser))
+}
+
 /// Solves the contact from a stated set of touching columns, the same for every interface.
 ///
 /// The set only decides how many steps it takes.

@@ -4,17 +4,18 @@ use crate::{
     diagnostic::{Assumption, Caution},
     estimate::{
         Band, BoltResult, CaseResult, Estimate, InterfaceResult, Met, PlaneResult,
-        RequirementResult, RingRow, TorqueSweep,
+        RequirementResult, RingRow, Sampling, TorqueSweep, Worst,
     },
     joint::{Limit, Plane, RequirementKind},
     report::{media::vacuum_over, number::inverse, text::left_out},
-    uncertainty::InMedium,
+    uncertainty::{InMedium, Verification},
 };
 use serde_json::{Map, Value, json};
 
 mod comparison;
 mod pressure;
 mod temperatures;
+mod window;
 
 pub use comparison::comparison;
 pub(super) use pressure::differences;
@@ -49,6 +50,7 @@ pub fn estimate(estimate: &Estimate) -> Value {
         ),
         ("heat", json!(estimate.heat)),
         ("without", json!(left_out(estimate))),
+        ("bolts_scatter", json!(estimate.bolts_scatter)),
         ("requirement", worst(estimate)),
         ("cases", json!(cases)),
         ("cautions", cautions(&estimate.cautions)),
@@ -77,6 +79,7 @@ fn case(case: &CaseResult) -> Map<String, Value> {
     for (key, value) in [
         ("case", json!(case.name)),
         ("sink_temperature", json!(case.sink_temperature)),
+        ("sink_radiates", json!(case.sink_radiates)),
         ("bolts", case.bolts.iter().map(bolt).collect()),
         ("pressure", pressure::pressure(case)),
         (
@@ -101,8 +104,10 @@ fn case(case: &CaseResult) -> Map<String, Value> {
                 "resistance_upper": case.resistance_upper,
             }),
         ),
+        ("worst", case.worst.as_ref().map_or(Value::Null, worst_cases)),
         ("numerical_error", json!(case.numerical_error)),
         ("draw_error", json!(case.draw_error)),
+        ("sampling", case.sampling.as_ref().map_or(Value::Null, sampling)),
         ("rise", rise(case)),
         ("temperatures", temperatures::temperatures(case)),
         (
@@ -124,6 +129,40 @@ fn case(case: &CaseResult) -> Map<String, Value> {
     object
 }
 
+/// Draws solved beside their surfaces; nothing on the cone.
+pub fn verification(found: Option<&Verification>) -> Value {
+    found.map_or(Value::Null, |found| {
+        json!({ "draws": found.draws, "largest_error": found.largest, "mean_error": found.mean })
+    })
+}
+
+/// Standard errors of low and high, K/W, and source to sink on the way to all draws.
+fn sampling(sampling: &Sampling) -> Value {
+    json!({
+        "scrambles": sampling.scrambles,
+        "standard_error": {
+            "contact": sampling.contact,
+            "node_to_node": sampling.node_to_node,
+            "added_by_joint": sampling.added_by_joint,
+            "source_to_sink": sampling.source_to_sink,
+        },
+        "source_to_sink": sampling.course.iter().map(|point| {
+            json!({ "draws": point.draws, "low": point.low, "high": point.high })
+        }).collect::<Vec<Value>>(),
+    })
+}
+
+/// Resistances with every input at its unfavourable end, K/W.
+fn worst_cases(worst: &Worst) -> Value {
+    let ends = |[low, high]: [f64; 2]| json!({ "low": low, "high": high });
+    json!({
+        "contact": ends(worst.contact),
+        "node_to_node": ends(worst.node_to_node),
+        "added_by_joint": ends(worst.added_by_joint),
+        "source_to_sink": ends(worst.source_to_sink),
+    })
+}
+
 fn bolt(bolt: &BoltResult) -> Value {
     json!({
         "at": bolt.at,
@@ -131,6 +170,8 @@ fn bolt(bolt: &BoltResult) -> Value {
         "force": band(&bolt.force),
         "force_in_service": band(&bolt.force_in_service),
         "strength_use": strength_use(bolt.strength_use),
+        "use_in_service": bolt.use_in_service,
+        "axial": bolt.axial.as_ref().map(window::axial),
         "largest_torque": bolt.largest_torque,
         "contact_radius": bolt.contact_radius,
         "contact_conductance": bolt.contact_conductance,
@@ -225,7 +266,8 @@ fn bound_key(bound: Limit) -> &'static str {
     }
 }
 
-fn cautions(cautions: &[Caution]) -> Value {
+/// Cautions with their codes.
+pub(crate) fn cautions(cautions: &[Caution]) -> Value {
     cautions
         .iter()
         .map(|caution| json!({ "code": caution.code, "text": caution.text }))
@@ -306,10 +348,17 @@ pub fn torque(sweep: &TorqueSweep) -> Value {
             "source_to_sink": minimum.source_to_sink,
             "added_by_joint": minimum.added_by_joint,
         })),
+        "at_stated": { "source_to_sink": sweep.at_stated },
+        "at_limit": sweep.at_limit.map(|limit| json!({
+            "torque": limit.torque,
+            "source_to_sink": limit.source_to_sink,
+            "added_by_joint": limit.added_by_joint,
+        })),
         "required": sweep.required.map(|(resistance, bound)| {
             json!({ "resistance": resistance, "bound": bound_key(bound) })
         }),
         "points": points,
+        "window": window::window(&sweep.window),
         "cautions": cautions(&sweep.cautions),
     })
 }

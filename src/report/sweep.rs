@@ -1,12 +1,13 @@
 //! Resistance against torque, for the terminal.
 
 use crate::{
-    estimate::{TorquePoint, TorqueSweep},
+    estimate::{Minimum, TorquePoint, TorqueSweep},
     joint::Limit,
     report::{
         number::{band, four, percent, plain},
         table::{Side, aligned},
         text::{Detail, cautions},
+        window,
     },
 };
 use std::fmt::Write;
@@ -14,6 +15,9 @@ use std::fmt::Write;
 /// Share by which the nominal resistance must rise past the best torque to be called worse: less
 /// is within what the fields themselves leave open.
 const WORSE: f64 = 0.005;
+
+/// Torques that differ by less are one, as a share.
+const SAME_TORQUE: f64 = 1e-6;
 
 /// Where more torque makes the joint worse although strength allows it.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -67,7 +71,7 @@ pub fn torque(sweep: &TorqueSweep) -> String {
                 marks.push("stated");
             }
             if Some(index) == best {
-                marks.push(if sweep.minimum.is_some() {
+                marks.push(if between_rows(sweep).is_some() {
                     "near best"
                 } else {
                     "best"
@@ -94,6 +98,8 @@ pub fn torque(sweep: &TorqueSweep) -> String {
         ],
         &rows,
     );
+    let torques: Vec<f64> = sweep.points.iter().map(|point| point.torque).collect();
+    let table = window::interleaved(&table, &torques, &window::marks(sweep));
     let mut text = format!("{}\n", plain(&sweep.title));
     let _ = writeln!(
         text,
@@ -122,7 +128,8 @@ pub fn torque(sweep: &TorqueSweep) -> String {
             four(torque)
         );
     }
-    text.push_str(&advice(sweep, best, stated));
+    text.push_str(&advice(sweep, best));
+    text.push_str(&window::statement(sweep));
     if let Some((resistance, bound)) = sweep.required {
         let side = match bound {
             Limit::Most => "at most",
@@ -142,17 +149,22 @@ pub fn torque(sweep: &TorqueSweep) -> String {
     text
 }
 
+/// The best torque where it is no row: the minimum between two, or the limit of strength.
+fn between_rows(sweep: &TorqueSweep) -> Option<Minimum> {
+    sweep.minimum.or(sweep.at_limit)
+}
+
 /// The row of the best torque, or the one nearest to it where it lies between two.
 fn best_row(sweep: &TorqueSweep) -> Option<usize> {
     let best = sweep.best?;
-    if sweep.minimum.is_some() {
+    if between_rows(sweep).is_some() {
         return nearest(sweep, best);
     }
     sweep.points.iter().position(|point| point.torque >= best)
 }
 
 /// What the sweep says about the best torque; never one beyond strength.
-fn advice(sweep: &TorqueSweep, best: Option<usize>, stated: Option<usize>) -> String {
+fn advice(sweep: &TorqueSweep, best: Option<usize>) -> String {
     if best.is_none() && sweep.gap_unknown() {
         return "best     not told: in gas the gap between the bolts grows with the force, so that more torque may \
                 be worse, and this field does not know the gap\n"
@@ -161,16 +173,17 @@ fn advice(sweep: &TorqueSweep, best: Option<usize>, stated: Option<usize>) -> St
     let (Some(index), Some(torque)) = (best, sweep.best) else {
         return "best     no torque of this range passes every strength limit\n".to_owned();
     };
-    let there = sweep
-        .minimum
-        .map_or(sweep.points[index].source_to_sink.nominal, |minimum| {
-            minimum.source_to_sink
-        });
-    let gain = stated.map_or_else(String::new, |stated| {
-        let gain = 1.0 - there / sweep.points[stated].source_to_sink.nominal;
+    let there = between_rows(sweep).map_or(sweep.points[index].source_to_sink.nominal, |found| {
+        found.source_to_sink
+    });
+    // No torque is better or worse than itself.
+    let gain = if (torque / sweep.stated - 1.0).abs() < SAME_TORQUE {
+        ", at the stated torque".to_owned()
+    } else {
+        let gain = 1.0 - there / sweep.at_stated;
         let side = if gain < 0.0 { "above" } else { "below" };
         format!(", {} {side} the stated torque", percent(gain.abs()))
-    });
+    };
     let mut text = format!(
         "best     {} N·m: {}{gain}\n",
         four(torque),
@@ -209,6 +222,8 @@ fn remarks(sweep: &TorqueSweep, index: usize) -> Vec<&'static str> {
         lines.push(
             "found between the rows; below it the contact lacks force, beyond it the gap opens",
         );
+    } else if sweep.at_limit.is_some() {
+        lines.push("it is the limit of strength itself, between two rows");
     } else if index == 0 && sweep.points.len() > 1 {
         lines.push(if sweep.resists() {
             "it is the first torque swept: less resists more, and what the bolts must hold decides"

@@ -10,10 +10,12 @@ use crate::{
         number::{band, cut, optional, percent, plain, wrapped},
         table::{Side, aligned},
     },
+    uncertainty::Verification,
 };
 use anstyle::{AnsiColor, Style};
 use std::fmt::Write;
 
+mod axial;
 mod pressure;
 mod rings;
 mod temperatures;
@@ -45,7 +47,7 @@ pub fn estimate_at(estimate: &Estimate, detail: Detail) -> String {
     let mut parts = vec![heading(estimate)];
     if let Some(case) = estimate.cases.first() {
         parts.push(bolts(case, detail));
-        parts.push(thermal::results(case));
+        parts.push(thermal::results(case) + &thermal::worst(estimate, case));
         parts.push(thermal::verdict(estimate, case) + &temperatures::told(estimate, case));
         if estimate.cases.len() > 1 {
             parts.push(thermal::cases(estimate));
@@ -104,8 +106,22 @@ pub(super) fn left_out(estimate: &Estimate) -> Vec<usize> {
     missing.map(|(bolt, _)| bolt + 1).collect()
 }
 
+/// Draws solved beside the surfaces that all draws are read from.
+pub fn verification(found: Option<&Verification>) -> String {
+    let line = match found {
+        Some(found) => format!(
+            "surfaces of the draws beside {} draws solved one by one: source to sink off by {} at most, {} on average",
+            found.draws,
+            percent(found.largest),
+            percent(found.mean)
+        ),
+        None => "every draw is solved; there are no surfaces to verify".to_owned(),
+    };
+    format!("\n{}\n", wrapped(&line, WIDTH, 2))
+}
+
 /// Wraps behind a label of fixed width, which `wrapped` alone would close up.
-fn wrapped_after(line: &str, label: usize) -> String {
+pub(super) fn wrapped_after(line: &str, label: usize) -> String {
     let head: String = line.chars().take(label).collect();
     let rest: String = line.chars().skip(label).collect();
     let body = wrapped(&rest, WIDTH - label, 0);
@@ -154,6 +170,7 @@ fn bolts(case: &CaseResult, detail: Detail) -> String {
         ],
         &rows,
     );
+    text.push_str(&axial::loads(case));
     text.push_str(&pressure::field(case, detail));
     text
 }
@@ -165,6 +182,7 @@ fn groups(bolts: &[BoltResult]) -> Vec<(String, Vec<&BoltResult>)> {
             && one.force == other.force
             && one.force_in_service == other.force_in_service
             && one.strength_use == other.strength_use
+            && one.axial == other.axial
             && one.largest_torque == other.largest_torque
     };
     let mut runs: Vec<(usize, Vec<&BoltResult>)> = Vec::new();

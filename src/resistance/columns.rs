@@ -43,6 +43,7 @@ mod clip;
 mod conduction;
 mod equations;
 mod heat;
+mod nodal;
 mod parts;
 mod readings;
 mod rims;
@@ -52,7 +53,9 @@ mod terminals;
 mod zone;
 
 pub use conduction::{Conduction, Perfect, solve_both};
+pub use equations::Family;
 pub use heat::{Health, Heat, Hottest};
+pub use nodal::nodal;
 pub use parts::Part;
 pub use section::{Across, Section};
 pub use stack::{Body, Conductivity, Meeting, Side, Slab, Stack};

@@ -202,43 +202,70 @@ impl Sense {
     }
 }
 
+/// Draws that one thread works out in one go.
+const TOGETHER: usize = 1024;
+
 /// Source to sink of several joints, each in a case, drawn with common numbers, K/W: joint by joint,
 /// draw by draw.
+///
+/// Inputs of one name in one joint (the friction of each of its bolts) meet those of another joint in
+/// their order.
 pub fn side_by_side(
     joints: &[(&Chain, usize)],
     options: &Options,
 ) -> Result<Vec<Vec<f64>>, Failure> {
     let own: Vec<Vec<Input>> = joints.iter().map(|(chain, _)| inputs(chain)).collect();
-    let mut common: Vec<&'static str> = Vec::new();
-    for input in own.iter().flatten() {
-        if !common.contains(&input.name) {
-            common.push(input.name);
-        }
-    }
-    let sobol = Sobol::new(common.len(), options.seed);
-    joints
+    let mut common: Vec<(&'static str, usize)> = Vec::new();
+    let places: Vec<Vec<usize>> = own
         .iter()
-        .zip(&own)
-        .map(|((chain, case), own)| {
-            let places: Vec<usize> = own
-                .iter()
-                .filter_map(|input| common.iter().position(|name| *name == input.name))
-                .collect();
-            chain.expect_draws(*case)?;
-            (0..options.draws)
-                .into_par_iter()
+        .map(|own| numbered(own).map(|key| place(&mut common, key)).collect())
+        .collect();
+    let sobol = Sobol::new(common.len(), options.seed);
+    let starts: Vec<usize> = (0..options.draws as usize).step_by(TOGETHER).collect();
+    let drawn = joints.iter().zip(own.iter().zip(&places));
+    drawn
+        .map(|((chain, case), (own, places))| {
+            let plan = chain.draw_plan(*case)?;
+            let parts = starts
+                .par_iter()
                 .map_init(
-                    || vec![0.0; common.len()],
-                    |point, index| {
-                        sobol.point(index, point);
-                        let mut at = Realisation::default();
-                        for (input, place) in own.iter().zip(&places) {
-                            (input.place)(&mut at, point[*place]);
-                        }
-                        Ok(chain.state(*case, &at)?.path.source_to_sink)
+                    || plan.workspace(),
+                    |workspace, start| {
+                        let mut walk = sobol.walk(*start as u32);
+                        let mut point = vec![0.0; common.len()];
+                        let count = TOGETHER.min(options.draws as usize - start);
+                        (0..count)
+                            .map(|_| {
+                                walk.next_into(&mut point);
+                                let mut at = Realisation::default();
+                                for (input, place) in own.iter().zip(places) {
+                                    (input.place)(&mut at, point[*place]);
+                                }
+                                Ok(plan.drawn(&at, workspace)?.source_to_sink)
+                            })
+                            .collect::<Result<Vec<f64>, Failure>>()
                     },
                 )
-                .collect()
+                .collect::<Result<Vec<Vec<f64>>, Failure>>()?;
+            Ok(parts.concat())
         })
         .collect()
+}
+
+/// Every input by its name and its number among those of that name.
+fn numbered(inputs: &[Input]) -> impl Iterator<Item = (&'static str, usize)> {
+    inputs.iter().enumerate().map(|(index, input)| {
+        let before = inputs[..index].iter();
+        let alike = before.filter(|other| other.name == input.name);
+        (input.name, alike.count())
+    })
+}
+
+/// Place of an input among the common ones, where it is added when it is new.
+fn place(common: &mut Vec<(&'static str, usize)>, key: (&'static str, usize)) -> usize {
+    let known = common.iter().position(|other| *other == key);
+    known.unwrap_or_else(|| {
+        common.push(key);
+        common.len() - 1
+    })
 }

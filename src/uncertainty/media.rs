@@ -5,7 +5,7 @@ use crate::{
     joint::Medium,
 };
 
-use super::draws;
+use super::{Answer, draws};
 
 /// A joint in one medium.
 #[derive(Clone, Debug, PartialEq)]
@@ -38,16 +38,19 @@ pub fn in_media(
             let (source_to_sink, added_by_joint) = if options.draws == 0 {
                 (Band::nominal(whole), Band::nominal(added))
             } else {
-                let draws = draws(&there, 0, options)?;
-                (draws.source_to_sink(whole), draws.added_by_joint(added))
+                let draws = draws(
+                    &there,
+                    (0, &[Answer::SourceToSink, Answer::AddedByJoint]),
+                    options,
+                )?;
+                (
+                    draws.band(Answer::SourceToSink, whole),
+                    draws.band(Answer::AddedByJoint, added),
+                )
             };
             Ok(InMedium {
                 medium: medium.clone(),
-                rise: heat.map(|heat| Band {
-                    low: source_to_sink.low.map(|low| heat * low),
-                    nominal: heat * whole,
-                    high: source_to_sink.high.map(|high| heat * high),
-                }),
+                rise: heat.map(|heat| source_to_sink.times(heat)),
                 source_to_sink,
                 added_by_joint,
             })

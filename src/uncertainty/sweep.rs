@@ -1,11 +1,18 @@
 //! Resistance against torque: the band at every torque, the limit of strength, the best torque.
 
 use crate::{
-    estimate::{self, Chain, Failure, Options, TorquePoint, TorqueSweep},
+    estimate::{
+        self, Band, CaseResult, Chain, Failure, LARGE_ERROR, Minimum, Options, TorquePoint,
+        TorqueSweep,
+    },
     joint::{Joint, Limit, Plane, RequirementKind, Tightening},
 };
 
-use super::{draws, minimum::minimum};
+use super::{
+    Answer,
+    minimum::minimum,
+    window::{Rows, Sought, window},
+};
 
 /// Which torques to try.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -18,9 +25,14 @@ pub struct SweepOptions {
     pub to: Option<f64>,
     /// Number of torques, at least two.
     pub steps: usize,
+    /// Share of the draws that every band holds, about the middle: 0.9 from 5 % to 95 %.
+    pub confidence: f64,
     /// Draws and seed.
     pub chain: Options,
 }
+
+/// Share of the draws that a band holds unless told otherwise.
+pub const CONFIDENCE: f64 = 0.9;
 
 /// Steps that are sooner solved one by one than through a table over the force.
 const FEW_STEPS: usize = 4;
@@ -61,15 +73,26 @@ pub fn sweep_along(chain: &Chain, options: &SweepOptions) -> Result<TorqueSweep,
     if !(0.0 < from && from < to && to.is_finite() && options.steps >= 2) {
         return Err(Failure::SweepRange { from, to });
     }
+    // First of all, so that every torque knows the error of the grid.
+    let nominal = estimate::nominal(chain, &options.chain)?;
+    let fine = |case: &CaseResult| case.numerical_error <= LARGE_ERROR;
+    let trusted = nominal.cases.iter().all(fine) && !nominal.flatness_decides();
+    let cautions = nominal.cautions;
     // Without draws every torque is solved for itself, which is soon done.
     if options.steps > FEW_STEPS && options.chain.draws > 0 {
         chain.expect_torques((case, options.group), [from, to])?;
     }
-    let points = (0..options.steps)
+    let sought = Sought {
+        chain,
+        options,
+        case,
+        range: [from, to],
+    };
+    let rows = (0..options.steps)
         .map(|step| from + (to - from) * step as f64 / (options.steps - 1) as f64)
-        .map(|torque| point(chain, options, (case, torque)))
-        .collect::<Result<Vec<TorquePoint>, Failure>>()?;
-    let cautions = estimate::nominal(chain, &options.chain)?.cautions;
+        .map(|torque| point(&sought, torque))
+        .collect::<Result<Vec<(TorquePoint, Option<f64>)>, Failure>>()?;
+    let (points, excess): (Vec<TorquePoint>, Vec<Option<f64>>) = rows.into_iter().unzip();
     let required = required(joint);
     let minimum = match required {
         Some((_, Limit::Least)) => None,
@@ -79,10 +102,37 @@ pub fn sweep_along(chain: &Chain, options: &SweepOptions) -> Result<TorqueSweep,
         }
         _ => None,
     };
-    let best = match minimum {
+    let window = window(
+        &sought,
+        &Rows {
+            points: &points,
+            excess: &excess,
+            minimum: minimum.map(|minimum| (minimum.torque, minimum.added_by_joint)),
+            trusted,
+        },
+    )?;
+    let at = |torque: f64| -> Result<Minimum, Failure> {
+        let path = chain
+            .with_torque(options.group, torque)?
+            .state(case, &estimate::Realisation::default())?
+            .path;
+        Ok(Minimum {
+            torque,
+            source_to_sink: path.source_to_sink,
+            added_by_joint: path.added_by_joint,
+        })
+    };
+    let row = match minimum {
         Some(minimum) => Some(minimum.torque),
         None => best_of(&points, required),
     };
+    let at_limit = match (minimum, row, largest) {
+        (None, Some(row), Some((largest, _))) if ends_the_window(&points, (row, largest)) => {
+            Some(at(largest)?).filter(|limit| better(limit, (&points, row), required))
+        }
+        _ => None,
+    };
+    let best = at_limit.map(|limit| limit.torque).or(row);
     let mut sweep = TorqueSweep {
         title: joint.title.clone(),
         group: estimate::group_label(group),
@@ -90,8 +140,11 @@ pub fn sweep_along(chain: &Chain, options: &SweepOptions) -> Result<TorqueSweep,
         largest,
         best,
         minimum,
+        at_stated: at(stated)?.source_to_sink,
+        at_limit,
         points,
         required,
+        window,
         case: joint.service.cases[case].name,
         field: chain.field_name(),
         resolution: chain.resolution_name(),
@@ -100,6 +153,7 @@ pub fn sweep_along(chain: &Chain, options: &SweepOptions) -> Result<TorqueSweep,
     // In gas the gap grows with the force, which this field does not know: no torque is the best.
     if sweep.gap_unknown() {
         sweep.best = None;
+        sweep.at_limit = None;
     }
     Ok(sweep)
 }
@@ -114,6 +168,28 @@ fn best_of(points: &[TorquePoint], required: Option<(f64, Limit)>) -> Option<f64
     let allowed = points.iter().filter(|point| point.passes);
     let best = allowed.min_by(|one, other| key(one).total_cmp(&key(other)));
     best.map(|point| point.torque)
+}
+
+/// Whether a row is the last that strength allows, with the largest torque between it and the next.
+fn ends_the_window(points: &[TorquePoint], (row, largest): (f64, f64)) -> bool {
+    let next = points.iter().find(|point| point.torque > row);
+    next.is_some_and(|next| !next.passes && row < largest && largest < next.torque)
+}
+
+/// Whether the joint stands better at the limit of strength than at a row.
+fn better(
+    limit: &Minimum,
+    (points, row): (&[TorquePoint], f64),
+    required: Option<(f64, Limit)>,
+) -> bool {
+    let there = points.iter().find(|point| point.torque >= row);
+    there.is_some_and(|there| {
+        let gain = there.source_to_sink.nominal - limit.source_to_sink;
+        match required {
+            Some((_, Limit::Least)) => gain < 0.0,
+            _ => gain > 0.0,
+        }
+    })
 }
 
 /// The case in which the joint stands worst: of most resistance, or of least where the requirement
@@ -141,38 +217,32 @@ pub(crate) fn worst_case(chain: &Chain) -> Result<usize, Failure> {
         .unwrap_or(0))
 }
 
-fn point(
-    stated: &Chain,
-    options: &SweepOptions,
-    (case, torque): (usize, f64),
-) -> Result<TorquePoint, Failure> {
-    let chain = stated.with_torque(options.group, torque)?;
-    let nominal = chain.state(case, &estimate::Realisation::default())?;
-    let path = &nominal.path;
-    let (source_to_sink, contact, added) = (
-        path.source_to_sink,
-        path.contact.recip(),
-        path.added_by_joint,
-    );
+/// One row, and how far it lies beyond what is required.
+fn point(sought: &Sought<'_>, torque: f64) -> Result<(TorquePoint, Option<f64>), Failure> {
+    let Sought { options, case, .. } = *sought;
+    let chain = sought.chain.with_torque(options.group, torque)?;
+    let nominal = chain.nominal_answers(case)?;
     let strength = chain.strength(options.group);
     let draws = match options.chain.draws {
         0 => None,
-        _ => Some(draws(&chain, case, &options.chain)?),
+        _ => Some(sought.drawn(&chain, &Answer::ALL)?),
     };
-    let band = |nominal: f64, of: fn(&super::Draws, f64) -> estimate::Band| {
-        draws
-            .as_ref()
-            .map_or(estimate::Band::nominal(nominal), |draws| of(draws, nominal))
+    let band = |answer: Answer| {
+        let value = answer.of(&nominal);
+        let drawn = draws.as_ref().map(|draws| draws.band(answer, value));
+        drawn.unwrap_or(Band::nominal(value))
     };
-    Ok(TorquePoint {
+    let point = TorquePoint {
         torque,
         force: chain.force(options.group),
-        source_to_sink: band(source_to_sink, super::Draws::source_to_sink),
-        contact: band(contact, super::Draws::contact),
-        added_by_joint: band(added, super::Draws::added_by_joint),
+        source_to_sink: band(Answer::SourceToSink),
+        contact: band(Answer::Contact),
+        added_by_joint: band(Answer::AddedByJoint),
         strength_use: strength.equivalent,
         passes: strength.passes,
-    })
+    };
+    let excess = sought.excess(&nominal, draws.as_ref());
+    Ok((point, excess))
 }
 
 /// The requirement as a source-to-sink resistance, where it can be put so.

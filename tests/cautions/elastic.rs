@@ -262,3 +262,27 @@ fn a_grid_too_coarse_for_its_source_is_told_in_its_own_words() {
         "{text}"
     );
 }
+
+#[test]
+fn a_zone_far_smaller_than_a_cell_is_told() {
+    let code = "resistance/narrow-zone";
+    let heated = |size: &str| {
+        let zone = format!("heated = {{ centre = [\"20 mm\", \"20 mm\"], diameter = \"{size}\" }}");
+        told(&with(
+            r#"finish = { process = "milled" }"#,
+            &format!("finish = {{ process = \"milled\" }}\n{zone}"),
+        ))
+    };
+    let text = of(&heated("0.2 mm"), code).expect("far below its plate's thickness");
+    // 0.4732/(k √A) of 0.2 mm is the number, by hand for 167 W/(m K) 16 K/W; a hundredth is squeezed out
+    // of sight at that width.
+    let low = text
+        .split("up to ")
+        .nth(1)
+        .and_then(|rest| rest.split(' ').next());
+    let low: f64 = low.expect("a number").parse().expect("a number");
+    assert!((14.0..17.0).contains(&low), "{text}");
+    // Wider than 1.5 thicknesses of 4 mm.
+    assert_eq!(of(&heated("7 mm"), code), None);
+    assert_eq!(gravity(code), Gravity::Range);
+}

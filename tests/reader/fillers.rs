@@ -80,8 +80,35 @@ fn a_stated_boundary_or_table_replaces_that_of_the_catalogue() {
     );
     let own = points("name = \"indium foil\"\ntable = [[\"0 Pa\", \"1 K·cm²/W\"]]");
     assert_eq!(own.len(), 1);
-    let paste = filler("name = \"filled grease\"\nbond_line = \"50 µm\"");
-    assert!(matches!(paste, FillerKind::Layer { .. }), "{paste:?}");
+}
+
+#[test]
+fn a_stated_bond_line_is_liquid_unless_the_file_says_solid() {
+    for lines in [
+        "name = \"filled grease\"\nbond_line = \"50 µm\"",
+        "name = \"silicone grease\"\nbond_line = \"50 µm\"",
+        "bond_line = \"50 µm\"\nconductivity = \"2 W/(m·K)\"",
+        "model = \"paste\"\nbond_line = \"50 µm\"\nconductivity = \"2 W/(m·K)\"",
+    ] {
+        let found = filler(lines);
+        assert!(
+            matches!(found, FillerKind::Paste { thinnest, applied, .. } if near(thinnest, 5e-5) && near(applied, 5e-5)),
+            "{lines}: {found:?}"
+        );
+    }
+    for lines in [
+        "name = \"filled grease\"\nmodel = \"layer\"\nbond_line = \"50 µm\"",
+        "name = \"filled grease\"\nbond_line = \"50 µm\"\nboundary = \"0.1 K·cm²/W\"",
+        "bond_line = \"50 µm\"\nconductivity = \"2 W/(m·K)\"\nmodulus = \"1 GPa\"",
+    ] {
+        let found = filler(lines);
+        assert!(
+            matches!(found, FillerKind::Layer { thickness, .. } if near(thickness, 5e-5)),
+            "{lines}: {found:?}"
+        );
+    }
+    // A bond of the catalogue has set.
+    assert!(!points("name = \"epoxy bond\"\nbond_line = \"50 µm\"").is_empty());
 }
 
 #[test]
@@ -93,7 +120,7 @@ fn guide_settling_is_left_to_the_preload() {
     assert_eq!(losses("settling = \"guide\"").settling, None);
     assert_eq!(losses("relaxation = \"3 %\"").settling, None);
     let stated = losses("settling = \"12 µm\"").settling;
-    assert!(stated.is_some_and(|settling| near(settling, 12e-6)));
+    assert!(stated.is_some_and(|settling| near(settling.nominal, 12e-6)));
 }
 
 #[test]
@@ -167,4 +194,20 @@ fn a_modulus_of_the_catalogue_is_an_assumption_and_a_stated_one_is_none() {
     assert!(told.why.starts_with("catalogue value"), "{told:?}");
     assert_eq!(assumed("name = \"gap pad\"\nmodulus = \"0.2 MPa\""), None);
     assert_eq!(assumed("name = \"indium foil\""), None);
+}
+
+#[test]
+fn a_foil_takes_its_hardness_from_the_catalogue_or_the_file() {
+    let known = filler("name = \"indium foil\"\nmodel = \"foil\"");
+    assert!(
+        matches!(known, FillerKind::Foil { hardness, thickness, .. } if near(hardness, 9e6) && near(thickness, 1e-4)),
+        "{known:?}"
+    );
+    let own = filler(
+        "model = \"foil\"\nconductivity = \"35 W/(m·K)\"\nthickness = \"50 µm\"\nhardness = \"40 MPa\"",
+    );
+    assert!(
+        matches!(own, FillerKind::Foil { hardness, .. } if near(hardness, 4e7)),
+        "{own:?}"
+    );
 }

@@ -8,6 +8,7 @@ use ringsum::{
         spots::Surfaces,
     },
     joint::FillerKind,
+    numerics::distribution::Shape,
 };
 use serde::Deserialize;
 
@@ -53,6 +54,7 @@ fn gas_at_300_kelvin(name: &str, accommodation: f64) -> Gas {
         accommodation: Datum {
             value: accommodation,
             range: None,
+            shape: Shape::Uniform,
             status: Status::Seen,
             source: "tests/data/contact_gases.toml".into(),
         },

@@ -66,7 +66,21 @@ fn beyond_filler(local: &Local, peak: f64, cautions: &mut Vec<Caution>) {
                 cautions.push(caution("filler/outside-table", text));
             }
         }
-        Some(FillerKind::Paste { thinnest, .. }) if peak > PASTE_END => {
+        Some(FillerKind::Foil { hardness, .. }) if peak > *hardness => {
+            let text = format!(
+                "the pressure reaches {}, the foil yields at {}: beyond that its boundaries are held and it thins \
+                 and creeps out, which is left out",
+                megapascals(peak),
+                megapascals(*hardness),
+            );
+            cautions.push(caution("filler/foil-flows", text));
+        }
+        // One of stated bond line has no law to leave.
+        Some(FillerKind::Paste {
+            thinnest,
+            yield_stress,
+            ..
+        }) if peak > PASTE_END && *yield_stress > 0.0 => {
             let text = format!(
                 "the pressure reaches {}, the bond line of pastes is known to about {}; it is \
                  kept at {:.0} µm or more, the largest filler particle",

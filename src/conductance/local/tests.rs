@@ -266,3 +266,48 @@ fn cautions_name_the_end_of_tables() {
     assert_eq!(codes(&measured, 5e5), ["measured/outside-range"]);
     assert_eq!(codes(&measured, 5e4), ["measured/outside-range"]);
 }
+
+#[test]
+fn indium_foil_is_near_its_table() {
+    // 100 µm, 82 W/(m K), 9 MPa between aluminium faces of 1 µm and slope 0.1, by hand: k_i = 110.0,
+    // h_i = 1.25 · 110.0 · 0.1e6 · (0.1/9)^0.95 = 1.913e5, R = 1.22e-6 + 2/1.913e5 = 0.1168 cm² K/W.
+    let mut pair = filled(FillerKind::Foil {
+        conductivity: 82.0,
+        thickness: 100e-6,
+        hardness: 9e6,
+    });
+    for face in &mut pair.faces {
+        (face.conductivity, face.roughness, face.slope) = (167.0, 1e-6, 0.1);
+        face.emissivity = 0.05;
+        face.coating = None;
+    }
+    pair.gas = None;
+    pair.filler_factor = 1.0;
+    let found = pair.prepare().total(1e5).recip();
+    assert!((found / 0.1168e-4 - 1.0).abs() < 2e-3, "{found}");
+    // Incropera, table 3.2, from memory: 0.07 cm² K/W on aluminium at 100 kPa. The law knows roughness and
+    // slope, the table does not: a factor of two.
+    assert!((0.5..2.0).contains(&(found / 0.07e-4)), "{found}");
+}
+
+#[test]
+fn foil_falls_to_its_bulk() {
+    let mut pair = filled(FillerKind::Foil {
+        conductivity: 82.0,
+        thickness: 100e-6,
+        hardness: 9e6,
+    });
+    pair.gas = None;
+    pair.filler_factor = 1.0;
+    for face in &mut pair.faces {
+        face.coating = None;
+    }
+    let local = pair.prepare();
+    let bulk = 100e-6 / 82.0;
+    let pressed = local.total(9e6).recip();
+    assert!(pressed > bulk && pressed < 1.6 * bulk, "{pressed}");
+    // Beyond its hardness nothing is promised.
+    assert!((local.total(90e6) / local.total(9e6) - 1.0).abs() < 1e-12);
+    // Loose in vacuum radiation alone is left: metals pass less than 10 W/(m² K).
+    assert!(local.unloaded() < 10.0 && local.parted(1e-6) <= local.unloaded());
+}

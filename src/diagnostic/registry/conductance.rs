@@ -94,6 +94,18 @@ pub(super) const ENTRIES: &[Entry] = &[
         ],
     ),
     Range.entry(
+        "filler/foil-flows",
+        "A foil pressed beyond its hardness",
+        [
+            "Up to its hardness a soft foil yields under the asperities only. Beyond that it flows as a whole: it \
+             thins under the heads and creeps out from there, and the bolt loses force as it does. The law holds \
+             its boundaries at their value and keeps its thickness, both on the side of more resistance; most \
+             of what is left is the foil itself, and that is little.",
+            "Tighten again after a day and after the first heat. Contain the foil in a groove, or take wider \
+             washers or less torque.",
+        ],
+    ),
+    Range.entry(
         "measured/outside-range",
         "Pressure outside the measured range",
         [

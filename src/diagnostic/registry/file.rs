@@ -105,6 +105,17 @@ pub(super) const ENTRIES: &[Entry] = &[
         "Swap the two, or correct the nominal value between them.",
     ),
     fault(
+        "value/distribution",
+        "A spread that is not one, or reaches where the value cannot be",
+        "A value may carry its spread: `\"5 mm ± 2 %\"` and `\"0.8 µm to 1.6 µm\"` have the same \
+         weight everywhere between their ends; a table names `uniform` or `triangular` between low \
+         and high, `normal` or `lognormal` about nominal with sigma. Half of the weight lies on \
+         each side of nominal. Normal and lognormal end at three sigma (0.27 % of the weight is cut \
+         off), and nothing is clamped: an end where the value cannot be is refused.",
+        "State a closer spread, or `distribution = \"lognormal\"` with sigma in percent, which \
+         stays above zero.",
+    ),
+    fault(
         "name/unknown",
         "A name that the catalogue does not have",
         "No material, thread, grade, finish, gas, filler or plate of this name is known. Similar \

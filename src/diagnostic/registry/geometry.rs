@@ -70,6 +70,31 @@ pub(super) const ENTRIES: &[Entry] = &[
          enlarge the back, or coat it.",
     ),
     fault(
+        "zone/no-metal",
+        "A heated or cooled zone that is mostly hole",
+        "Less than half of the zone is metal of its plate; the rest lies in bolt holes and cut-outs. Heat enters \
+         and leaves through metal alone, so that the little metal would have to take all of it.",
+        "Check its centre and size against the bolts and cut-outs; both are in the coordinates of its own plate. \
+         Half of it or more on metal is allowed: a wide zone may span holes.",
+    ),
+    fault(
+        "cooled/below-zero",
+        "A film too poor for the heat",
+        "The temperature of the service is that of the sink surface. To carry the heat, the film needs a \
+         coolant colder than absolute zero.",
+        "Check the unit of `film` (still air takes about 5 to 10, water 500 to 5000 W/(m²·K)), the cooled area and \
+         the heat.",
+    ),
+    fault(
+        "geometry/size-limit",
+        "A size beyond the limits of this program",
+        "Sizes beyond these are more likely a wrong unit than a bolted joint, and nothing was checked there: 3 m \
+         along a plate; 0.5 m of thickness of a plate, or of height of a rib or foot; a thickness of ten times the \
+         shortest side in plan; a head, nut or washer ten thread diameters across.",
+        "Check the unit. Of a larger structure describe the part around the joint; a long bar may be cut where \
+         its temperature is even.",
+    ),
+    fault(
         "zone/outside",
         "A heated or cooled zone off its plate",
         "The zone reaches beyond the face it stands on, so part of its heat would enter nowhere.",

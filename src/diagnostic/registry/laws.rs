@@ -314,6 +314,26 @@ pub(super) const ENTRIES: &[Entry] = &[
         ],
     ),
     Law {
+        equation: "R = t/k + 1/h;   1/h = Σ 1/h_i over both faces;   h_i = 1.25 k_i (m_i/σ_i)(P/H)^0.95, H of the \
+                   foil, P/H at most 1",
+        range: "foil much softer than both faces and thicker than their roughness; P up to H, above the \
+                boundaries are held",
+        source: "plastic law of Yovanovich 1982 with the hardness of the foil, Yovanovich 1972, both from memory; \
+                 indium on aluminium within a factor of two of Incropera's table 3.2 (memory)",
+    }
+    .entry(
+        "law/foil",
+        "Soft foil that yields",
+        [
+            "`model = \"foil\"`: the asperities of both faces sink into a foil of indium or graphite, whose hardness \
+             then decides instead of theirs. Each boundary falls nearly in proportion to the pressure until the foil \
+             flows; beside the contact the foil lies loose, and the medium alone crosses. A table of the catalogue \
+             knows neither the roughness nor pressures beyond its last point.",
+            "Choose a thin foil that is thicker than both roughnesses together; harder foils (graphite, lead, tin) \
+             need more pressure.",
+        ],
+    ),
+    Law {
         equation: "BLT = 1.31·10⁻⁴ m (τ_y/P)^0.166,   R″ = BLT/k + (σ₁ + σ₂)/(2k)",
         range: "0.1 to 1 MPa; not thinner than the largest particles, not thicker than applied",
         source: "Prasher 2001 and 2002, constants from memory",
@@ -415,6 +435,95 @@ pub(super) const ENTRIES: &[Entry] = &[
             "The error told is the difference to the next coarser grid. A small heated zone, an edge \
              that is cooled, feet and ribs are part of the solution, and no rule of the plan grid \
              (`law/cell`) is used.",
+        ],
+    ),
+    Law {
+        equation: "F = 4E/(1−ν²) · t⁴/(K₁ D_e²) · s/t [(h₀/t − s/t)(h₀/t − s/2t) + 1];   \
+                   δF + s(F) = δF₀ + s(F₀) + Δl",
+        range: "discs without contact flats (up to about 6 mm thick), h₀ at most √2 t, no friction; \
+                15 to 75 % of the height",
+        source: "Almen & Laszlo 1936 as in DIN EN 16984 (from memory); checked against printed forces of \
+                 DIN 2093 series A within 0.6 % and against an integral of the strain",
+    }
+    .entry(
+        "law/disc-spring",
+        "Disc springs in the clamp",
+        [
+            "s is the deflection, t the thickness, h₀ the cone, D_e the outer diameter and K₁ a factor of \
+             D_e/D_i. Nested discs add force, sets head to head add deflection. In the clamp the springs \
+             follow what settles or contracts (Δl) along their curve, so that the bolt keeps its force; flat \
+             springs follow no more.",
+            "State `disc_springs`. Choose them so that the nominal clamp force lies near 75 % of the force at \
+             flat, and enough sets that their travel is several times what is lost. A flat washer between \
+             them and a soft plate spares the plate. Heat through the shank has to pass the springs: where that \
+             path matters, `shank_path = false` leaves it out.",
+        ],
+    ),
+    Law {
+        equation: "Φ = n δ_P/(δ_S + δ_P);   F_S = F + Φ F_A;   F_K = F − (1 − Φ) F_A;   \
+                   σ = √(σ² + 3 (τ/2)²) ≤ R_p",
+        range: "load along the bolt, pulling; no prying, no bending, no fatigue; n between 0 and 1",
+        source: "VDI 2230 (Φ from its resilience, worked by hand in the tests; half torsion from memory); \
+                 factor 1.2 against separation of NASA-STD-5020, from memory",
+    }
+    .entry(
+        "law/axial-load",
+        "Load along the bolts",
+        [
+            "Of a load F_A the bolt takes the share Φ and the faces lose the rest. n tells where the load \
+             enters: near the heads (1) the bolt takes more, near the faces (0) less. Where n is not stated, \
+             each side is judged at its worst end: the bolt with n = 1, the clamp with n = 0.",
+            "State `axial_load` with its range, its cases and `introduction` where it is known. A load that does \
+             not act while heat flows is stated with `lasting = false`.",
+        ],
+    ),
+    Law {
+        equation: "F = F_assembly (1 − r)(1 − i)",
+        range: "i = 5 % on bare or pasted faces, 10 % on a soft layer, 0 for one bolt; in the low force alone \
+                unless [losses] is stated",
+        source: "judgement; flanges on soft gaskets lose 20 to 40 % in a single pass (from memory)",
+    }
+    .entry(
+        "law/interaction",
+        "Bolts tightened one after another",
+        [
+            "Each bolt presses the plates a little further and takes force from those tightened before it.",
+            "Tighten crosswise from the middle, in passes to a third, two thirds and all of the torque, then \
+             once round at full torque, and again after settling. State `losses.interaction` where it was \
+             measured on the stack.",
+        ],
+    ),
+    Law {
+        equation: "σ_seat = (1 − 2ν)/2 · F/A;   σ_bend = 4 E t h/((1 − ν) L²);   \
+                   σ_seat + σ_bend ≤ strength/3",
+        range: "rounded seats; a thin plate pressed flat from a dish h over its shorter side L",
+        source: "Hertz contact (Johnson, from memory) and plate theory; the factor 3 is judgement",
+    }
+    .entry(
+        "law/brittle",
+        "What a brittle plate bears",
+        [
+            "Beside the edge of a pressed seat the surface is in tension; pressing a plate flat bends it. Both \
+             are added, which is on the safe side, and held against a third of the strength in bending.",
+            "State `flexural_strength` of the plate; then it limits the torque as well.",
+        ],
+    ),
+    Law {
+        equation: "window = {T: R_u(T) meets the requirement} ∩ [T_separation, T_strength];   \
+                   knee: 1/R_added(T) = 0.9/R_added(T_best)",
+        range: "torques swept; R_u is the unfavourable end of the band: 95 % of the draws at 90 % confidence",
+        source: "definitions of this program; ends found between the rows, checked against fine sweeps",
+    }
+    .entry(
+        "law/torque-window",
+        "The torque window",
+        [
+            "Heat asks for force, strength forbids too much, separation and losses too little. The knee tells \
+             where tightening has given nine tenths of what it can: the joint's own conductance, 1/R added by \
+             the joint, reaches 90 % of that at the best torque.",
+            "Tighten inside the window, near its middle where the tool is coarse. Where none is left, the \
+             limits named tell which side to move; changes that were tried are told with their windows. It \
+             is no torque card: codes and a responsible engineer decide.",
         ],
     ),
 ];

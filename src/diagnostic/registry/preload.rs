@@ -242,4 +242,80 @@ pub(super) const ENTRIES: &[Entry] = &[
             "State `temperature = { hot = …, cold = …, assembly = … }` to let expansion act.",
         ],
     ),
+    Grave.entry(
+        "preload/separation",
+        "The load may part the faces",
+        [
+            "A load along the bolts takes force from between the faces. At the least clamp force, after \
+             losses, it must be able to grow by the stated factor before they part; a parted joint \
+             conducts nothing there and works its bolts to death.",
+            "Raise the preload within its limits, use more or larger bolts, narrow the scatter of \
+             tightening. The factor that counts is that of the applicable code or standard; the \
+             engineer responsible for the structure decides.",
+        ],
+    ),
+    Grave.entry(
+        "preload/over-in-service",
+        "Load and temperature bring the bolt beyond its strength",
+        [
+            "Besides its preload the bolt bears its share of the load and what plates that expand more \
+             than it add. Half of the torsion of tightening is counted as still there.",
+            "Lower the torque, soften the stack with a longer bolt or disc springs, or take a stronger \
+             or larger bolt. Bending, prying and fatigue are not counted: check them by the applicable \
+             code with a responsible engineer.",
+        ],
+    ),
+    Range.entry(
+        "preload/springs-flat",
+        "Disc springs lie flat",
+        [
+            "A disc spring pressed flat is a washer: settling and contraction then cost as much force as \
+             without it. Disc springs work between about 15 and 75 % of their height.",
+            "Nest more discs in parallel, take thicker ones, or less force; set the nominal clamp force near \
+             three quarters of the force at flat.",
+        ],
+    ),
+    Note.entry(
+        "preload/split-washer",
+        "A split spring washer keeps no force",
+        [
+            "It lies flat at a few percent of the clamp force of a bolt of class 8.8 and acts as a hard, \
+             narrow washer from there on. Standards for it were withdrawn in several countries (common \
+             practice, no source).",
+            "Leave it out. Keep force by a longer bolt, disc springs or re-tightening; secure against \
+             turning by a locking thread or adhesive.",
+        ],
+    ),
+    Note.entry(
+        "preload/soft-layer",
+        "Bolts on a soft layer lose force to their neighbours",
+        [
+            "Tightening a bolt presses the layer further and relieves the bolts beside it; a soft gasket \
+             tightened once round loses 20 to 40 % so (from memory). Afterwards the layer creeps.",
+            "Tighten crosswise, in three passes to a third, two thirds and all of the torque, then once round \
+             at full torque, and again after a day or the first warm cycle. State `losses.interaction` where \
+             it was measured.",
+        ],
+    ),
+    Range.entry(
+        "preload/brittle",
+        "A plate that breaks rather than yields",
+        [
+            "Ceramic, glass and semiconductors do not even out a stress: tension beside the seat and bending \
+             from being pressed flat add up, and a scratch or a grain under the head is enough. The stresses \
+             told are closed forms for clean, rounded seats.",
+            "State `flexural_strength`; put a soft flat washer under the head, keep both faces flat, tighten \
+             by a small, known torque. Prove the part by a test with a responsible engineer.",
+        ],
+    ),
+    Grave.entry(
+        "preload/brittle-over",
+        "A brittle plate uses too much of its strength",
+        [
+            "More than a third of the stated strength in bending is used. Brittle parts of one lot scatter \
+             by a third in strength and lose more with time under load.",
+            "Take less force, a wider and softer seat, flatter faces or a thinner plate, which bends flat at \
+             less stress. Prove the part by a test with a responsible engineer.",
+        ],
+    ),
 ];

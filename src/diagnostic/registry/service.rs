@@ -104,6 +104,19 @@ pub(super) const ENTRIES: &[Entry] = &[
         ],
     ),
     Range.entry(
+        "resistance/narrow-zone",
+        "A heated or cooled zone narrow against its plate",
+        [
+            "Through the thickness of a plate the temperature is followed by polynomials that are good for zones \
+             1.5 thicknesses wide or more. Below that the heat right at the zone's face squeezes on a length they \
+             do not see, on the coarsest grid and on the finest: source to sink and the hottest point read low. \
+             What is told is the rise of such a square on a half-space, 0.4732/(k √A), times the share that may be \
+             missed; it counts as numerical error, and a requirement is not met for sure where it passes 5 %.",
+            "Add the local spreading under the part by hand, or state the zone as wide as the part's base spreads \
+             its heat. What the joint adds hardly feels it.",
+        ],
+    ),
+    Range.entry(
         "resistance/grid-error",
         "The grid is coarse for this joint",
         [

@@ -178,7 +178,7 @@ fn seats_yield(chain: &Chain) -> Vec<Caution> {
 /// A layer that conducts but does not spread the pressure, for want of its modulus.
 fn rigid_filler(filler: &Filler) -> Option<Caution> {
     let layer = match filler.kind {
-        FillerKind::Layer { .. } | FillerKind::Table { .. } => true,
+        FillerKind::Layer { .. } | FillerKind::Foil { .. } | FillerKind::Table { .. } => true,
         FillerKind::Fluid { .. } | FillerKind::Paste { .. } => false,
     };
     (layer && filler.stiffness().is_none()).then(|| {

@@ -88,12 +88,12 @@ fn with_bare_face(joint: &Joint, holds: impl Fn(&Finish) -> bool) -> Vec<&Plate>
     plates.filter(told).map(|(_, plate)| plate).collect()
 }
 
-pub(super) fn material_cautions(joint: &Joint) -> Vec<Caution> {
+pub(super) fn material_cautions(joint: &Joint, cases: &[CaseResult]) -> Vec<Caution> {
     let mut found = Vec::new();
-    for plate in &joint.plates {
+    for (index, plate) in joint.plates.iter().enumerate() {
         let material = &plate.material;
-        for case in &joint.service.cases {
-            let temperature = case.temperature;
+        for case in cases {
+            let [temperature, hottest] = temperatures(joint, (case, index));
             if temperature < DATA_FROM && material.conductivity_fit.is_none() {
                 found.push(caution(
                     "material/room-temperature-data",
@@ -103,11 +103,11 @@ pub(super) fn material_cautions(joint: &Joint) -> Vec<Caution> {
                     ),
                 ));
             }
-            if temperature > DATA_TO {
+            if hottest > DATA_TO {
                 found.push(caution(
                     "material/above-range",
                     format!(
-                        "{}: the data of {} are room-temperature values, used at {temperature:.0} K; strength, \
+                        "{}: the data of {} are room-temperature values, used up to {hottest:.0} K; strength, \
                          hardness and creep change first",
                         plate.name, material.name
                     ),
@@ -126,6 +126,19 @@ pub(super) fn material_cautions(joint: &Joint) -> Vec<Caution> {
     }
     found.extend((0..joint.interfaces()).filter_map(|interface| galvanic(joint, interface)));
     found
+}
+
+/// Mean and highest temperature of a plate, K: of the solved heat, or those of the sink where there is none.
+fn temperatures(joint: &Joint, (case, index): (&CaseResult, usize)) -> [f64; 2] {
+    let sink = case.sink_temperature;
+    let heat = joint.service.heat.unwrap_or(0.0);
+    let rises = case.temperatures.as_ref();
+    let mean = rises.and_then(|rises| rises.plate_means.get(index));
+    let mean = sink + heat * mean.copied().unwrap_or(0.0);
+    // Of the first plate alone the hottest point is known.
+    let hottest = case.rise.filter(|_| index == 0);
+    let hottest = hottest.map_or(mean, |rise| sink + rise.hottest.nominal);
+    [mean, hottest.max(mean)]
 }
 
 /// Pairs of families that corrode when wet, the nobler first.

@@ -32,8 +32,13 @@ pub(super) fn field_cautions(chain: &Chain, cases: &[CaseResult]) -> Vec<Caution
         .map(|plate| plate.thickness)
         .fold(f64::INFINITY, f64::min);
     if let Some(pitch) = widest_pitch(joint).filter(|pitch| *pitch > WIDE_PITCH * thinnest) {
+        let feet = joint.plates.iter().any(|plate| plate.feet.is_some());
         let what = match cases.first().and_then(|case| case.pressure.gap_max) {
-            // Feet and bow open faces too; what is told is true of any cause.
+            // The widest gap is then the height of the feet, which says nothing of the plates.
+            Some(_) if feet => {
+                "between them only feet touch, and heat must travel along the plates; the solved field has both".to_owned()
+            }
+            // A bow opens faces too; what is told is true of any cause.
             Some(gap) => format!(
                 "the plates stand up to {:.3} µm apart, and heat must travel along them; the solved field has both",
                 gap * 1e6
@@ -216,7 +221,7 @@ fn flatness_decides(joint: &Joint) -> bool {
         .map(|plate| plate.bow.map_or(plate.flatness.unwrap_or(0.0), f64::abs))
         .sum();
     let layer = joint.filler(0).and_then(|filler| match filler.kind {
-        FillerKind::Layer { thickness, .. } => Some(thickness),
+        FillerKind::Layer { thickness, .. } | FillerKind::Foil { thickness, .. } => Some(thickness),
         FillerKind::Paste { applied, .. } => Some(applied),
         FillerKind::Fluid { .. } | FillerKind::Table { .. } => None,
     });

@@ -1,13 +1,16 @@
 //! What heat meets in a joint at one realisation: forces, faces, conductivities.
 
+use serde_json::{Value, json};
+
 use crate::{
     conductance::{Curve, Local},
     estimate::{
         Chain, Failure, Realisation,
         chain::{Model, Warmth},
-        surfaces,
+        forces::Group,
+        surfaces::{Conducting, Facets},
     },
-    joint::MeasuredKind,
+    joint::{LawLoad, MeasuredKind, Tightening},
     resistance::Load,
 };
 
@@ -86,6 +89,129 @@ impl Faces {
     }
 }
 
+/// What heat may meet in one case: everything looked up that no draw moves.
+#[derive(Clone, Debug)]
+pub(super) struct Outlook<'a> {
+    chain: &'a Chain<'a>,
+    case: usize,
+    facets: Vec<Facets>,
+    conducting: Vec<Conducting>,
+    shanks: Vec<f64>,
+    force_law: Option<ForceLaw>,
+}
+
+/// A measured law of the conductance of a bolt over its force, at the temperature of a case.
+#[derive(Clone, Debug)]
+struct ForceLaw {
+    /// Conductance of a bolt under its reference force, W/K.
+    conductance: f64,
+    exponent: f64,
+    /// Reference force of every bolt, N.
+    references: Vec<f64>,
+}
+
+impl ForceLaw {
+    /// As a local conductance over pressure, W/(m² K Pa).
+    ///
+    /// ```text
+    /// h = p Σ G(F)/Σ F,   G = G₀ (F/F₀)ⁿ (T/T₀)ᵐ   so that ∫ h dA = Σ G, since ∫ p dA = Σ F
+    /// ```
+    fn per_pascal(&self, forces: &[f64]) -> f64 {
+        let bolts = forces.iter().zip(&self.references);
+        let whole: f64 = bolts
+            .map(|(force, reference)| self.conductance * (force / reference).powf(self.exponent))
+            .sum();
+        let carried: f64 = forces.iter().sum();
+        if carried > 0.0 { whole / carried } else { 0.0 }
+    }
+}
+
+impl<'a> Outlook<'a> {
+    /// A case with plates of known temperature.
+    pub(super) fn of(chain: &'a Chain, case: usize, warmth: &Warmth) -> Result<Self, Failure> {
+        let joint = chain.joint();
+        let facets = (0..joint.interfaces())
+            .map(|index| {
+                let facets = Facets::of(joint, (index, warmth.interface(index)))?;
+                // Only a solved field knows how a layer is pressed.
+                let pressed = joint.filler(index).filter(|_| chain.knows_the_gap());
+                Ok(facets.pressed(pressed.and_then(|filler| filler.modulus)))
+            })
+            .collect::<Result<Vec<Facets>, Failure>>()?;
+        let plates = joint.plates.iter().enumerate();
+        let conducting = plates
+            .map(|(index, plate)| Conducting::of(plate, warmth.plate(index)))
+            .collect::<Result<Vec<Conducting>, Failure>>()?;
+        Ok(Self {
+            chain,
+            case,
+            facets,
+            conducting,
+            shanks: chain.shanks(warmth.bolts())?,
+            force_law: chain.force_law(case),
+        })
+    }
+
+    /// What moves with a draw, as data: faces, plates, and the losses of every group at the whole
+    /// share of the guide values, as forces of a bolt without springs.
+    pub(super) fn tables(&self) -> Value {
+        let joint = self.chain.joint();
+        let losses = |(_, group): (_, &Group)| {
+            let losses = group.losses(joint, self.case, &Realisation::losing(1.0));
+            let compliance = group.elasticity.compliance;
+            let force = |length: f64| length / (compliance.bolt + compliance.plates);
+            json!({
+                "settling": force(losses.settling),
+                "relaxation": losses.relaxation,
+                "interaction": losses.interaction,
+                "temperature": force(losses.growth),
+            })
+        };
+        let plates = self.conducting.iter().map(Conducting::table);
+        json!({
+            "faces": self.facets.iter().map(Facets::table).collect::<Vec<Value>>(),
+            "plates": plates.collect::<Vec<Value>>(),
+            "losses": self.chain.groups().map(losses).collect::<Vec<Value>>(),
+        })
+    }
+
+    /// What heat meets at a realisation.
+    pub(super) fn at(&self, at: &Realisation) -> Conditions {
+        let mut found = Conditions {
+            forces: Vec::new(),
+            faces: Vec::new(),
+            temperature: self.chain.joint().service.cases[self.case].temperature,
+            conductivity: Vec::new(),
+            shanks: self.shanks.clone(),
+        };
+        self.put(at, &mut found);
+        found
+    }
+
+    /// Puts forces, faces and conductivities of a realisation in place of others of this case.
+    pub(super) fn put(&self, at: &Realisation, conditions: &mut Conditions) {
+        let chain = self.chain;
+        let joint = chain.joint();
+        let forces = &mut conditions.forces;
+        chain.put_service_forces((self.case, at), forces);
+        let law = self.force_law.as_ref().map(|law| law.per_pascal(forces));
+        conditions.faces.clear();
+        conditions.faces.extend(self.facets.iter().map(|facets| {
+            let interface = facets.at(joint, at);
+            let per_pascal = law.map(|law| law * interface.solid_factor);
+            Faces {
+                local: interface.into_local(),
+                per_pascal,
+            }
+        }));
+        conditions.conductivity.clear();
+        let plates = self.conducting.iter().enumerate();
+        conditions.conductivity.extend(
+            plates.map(|(plate, conducting)| conducting.at(at.conductivity_of(joint, plate))),
+        );
+    }
+}
+
 impl Conditions {
     /// The same without gas in the gaps; none where there is none.
     pub(super) fn without_gas(&self) -> Option<Self> {
@@ -125,49 +251,31 @@ impl Chain<'_> {
         warmth: &Warmth,
         at: &Realisation,
     ) -> Result<Conditions, Failure> {
-        let joint = self.joint();
-        let by_group: Vec<f64> = joint
-            .fasteners
-            .iter()
-            .zip(&self.groups)
-            .map(|(fastener, group)| group.service_force(joint, fastener, (case, at)))
-            .collect();
-        let forces = self.of_bolts(&by_group);
-        let temperature = joint.service.cases[case].temperature;
-        let law = self.force_law(&forces, temperature);
-        let faces = (0..joint.interfaces())
-            .map(|index| {
-                let place = (index, warmth.interface(index));
-                let mut interface = surfaces::interface(joint, place, at)?;
-                if self.knows_the_gap() {
-                    // Only a solved field knows how a layer is pressed.
-                    interface.filler_modulus =
-                        joint.filler(index).and_then(|filler| filler.modulus);
-                }
-                Ok(Faces {
-                    local: interface.prepare(),
-                    per_pascal: law.map(|law| law * interface.solid_factor),
-                })
-            })
-            .collect::<Result<Vec<Faces>, Failure>>()?;
-        Ok(Conditions {
-            forces,
-            faces,
-            temperature,
-            conductivity: surfaces::conductivities(joint, warmth, at)?,
-            shanks: self.shanks(warmth.bolts())?,
-        })
+        Ok(Outlook::of(self, case, warmth)?.at(at))
     }
 
-    /// Measured W/K per bolt as a local conductance over pressure, W/(m² K Pa).
-    ///
-    /// ```text
-    /// h = p Σ G(F)/Σ F,   G = G₀ (F/F₀)ⁿ (T/T₀)ᵐ   so that ∫ h dA = Σ G, since ∫ p dA = Σ F
-    /// ```
-    fn force_law(&self, forces: &[f64], temperature: f64) -> Option<f64> {
+    /// Puts the clamp force of every bolt in service at one realisation, N.
+    fn put_service_forces(&self, (case, at): (usize, &Realisation), forces: &mut Vec<f64>) {
+        let joint = self.joint();
+        forces.clear();
+        for (fastener, group) in self.groups() {
+            let force = |bolt| group.service_force((joint, fastener), bolt, (case, at));
+            if at.bolts.is_empty() {
+                forces.extend(std::iter::repeat_n(force(None), fastener.places.len()));
+            } else {
+                let first = forces.len();
+                let bolts = first..first + fastener.places.len();
+                forces.extend(bolts.map(|bolt| force(Some(bolt))));
+            }
+        }
+        self.vacate(forces);
+    }
+
+    /// Measured W/K per bolt at the temperature of a case; none where no such law is stated.
+    fn force_law(&self, case: usize) -> Option<ForceLaw> {
         let MeasuredKind::ForceLaw {
             conductance,
-            force,
+            load,
             force_exponent,
             temperature: reference,
             temperature_exponent,
@@ -175,13 +283,32 @@ impl Chain<'_> {
         else {
             return None;
         };
-        let warmth = (temperature / reference).powf(temperature_exponent);
-        let whole: f64 = forces
+        let temperature = self.joint.service.cases[case].temperature;
+        Some(ForceLaw {
+            conductance: conductance * (temperature / reference).powf(temperature_exponent),
+            exponent: force_exponent,
+            references: match load {
+                LawLoad::Force(force) => vec![force; self.group_of.len()],
+                LawLoad::Torque(torque) => self.forces_at_torque(case, torque),
+            },
+        })
+    }
+
+    /// Force in service of every bolt that a torque would give at nominal friction, N.
+    fn forces_at_torque(&self, case: usize, torque: f64) -> Vec<f64> {
+        let nominal = self.nominal_forces(case, self.joint());
+        let stated = self.group_of.iter().map(|group| {
+            match &self.joint().fasteners[*group].tightening {
+                Tightening::Torque(stated) => stated.torque,
+                // The reader refuses such a law beside a preload.
+                Tightening::Preload(_) => torque,
+            }
+        });
+        nominal
             .iter()
-            .map(|each| conductance * (each / force).powf(force_exponent) * warmth)
-            .sum();
-        let carried: f64 = forces.iter().sum();
-        Some(if carried > 0.0 { whole / carried } else { 0.0 })
+            .zip(stated)
+            .map(|(force, stated)| force * torque / stated)
+            .collect()
     }
 
     /// Conductance of each bolt's shank from head to nut, W/K.

@@ -1,7 +1,10 @@
 //! The chain on a solved field: elastic contact and heat of the whole plates.
 
 mod columns;
+mod flat;
 mod level;
+mod pattern;
+mod plan;
 mod response;
 mod rings;
 mod round;
@@ -23,6 +26,7 @@ use crate::{
 
 use columns::Columns;
 use level::{Level, asked, coarser};
+pub(super) use plan::ElasticPlan;
 use round::Round;
 pub(super) use solver::Solved;
 use solver::{Factors, Solver};
@@ -228,9 +232,9 @@ impl ElasticModel {
         self.closed(chain, case).map(|(_, solved)| solved)
     }
 
-    /// How the faces of the first case meet at a point.
-    pub(super) fn met_at(&self, chain: &Chain, point: [f64; 2]) -> Option<Meeting> {
-        self.closed(chain, 0).ok()?.1.met_at(point)
+    /// How the faces of an interface meet at a point in the first case.
+    pub(super) fn met_at(&self, chain: &Chain, at: ([f64; 2], usize)) -> Option<Meeting> {
+        self.closed(chain, 0).ok()?.1.met_at(at)
     }
 
     /// Radius of a bolt's contact, m; not a number where no bolt clamps.
@@ -245,10 +249,10 @@ impl ElasticModel {
             .map_or(f64::NAN, |(_, solved)| solved.footprint())
     }
 
-    /// The rings around a bolt in the first case at nominal.
-    pub(super) fn rings(&self, chain: &Chain, bolt: usize) -> Vec<RingRow> {
+    /// The rings around a bolt in an interface, in the first case at nominal.
+    pub(super) fn rings(&self, chain: &Chain, (bolt, interface): (usize, usize)) -> Vec<RingRow> {
         self.closed(chain, 0)
-            .map_or_else(|_| Vec::new(), |(_, solved)| solved.rings(bolt))
+            .map_or_else(|_| Vec::new(), |(_, solved)| solved.rings(bolt, interface))
     }
 
     /// The path of a case at one realisation.
@@ -271,8 +275,13 @@ impl ElasticModel {
             // nominal stand on the ground level.
             return Ok(spread.response.alone(&to));
         };
+        let (there, here) = (
+            spread.shift(&conditions.forces),
+            spread.shift(&case.conditions.forces),
+        );
+        let shift = std::array::from_fn(|reading| there[reading] - here[reading]);
         let places = [at.field, at.flatness];
-        Ok(spread.moved(solved.path(), (&from, &to), places))
+        Ok(spread.moved(solved.path(), (&from, &to), (&shift, places)))
     }
 
     /// Works out the spread of a case: it runs on all cores itself, so that draws that run side by

@@ -50,11 +50,7 @@ impl ConeModel {
         } else {
             high + self.gas_share(chain)? * Self::gap_growth(chain)?
         };
-        Ok(Bounds {
-            low,
-            nominal: 1.0,
-            high,
-        })
+        Ok(Bounds::uniform([low, 1.0, high]))
     }
 
     /// Gap between the bolts over the distance of the closed faces as the gas meets them, 1.
@@ -113,6 +109,23 @@ pub(super) fn with_form(path: Path, form: f64) -> Path {
         hottest: path.hottest + moved,
         interface_drop: path.interface_drop * form,
         node_to_node: path.node_to_node + moved,
+        ..path
+    }
+}
+
+/// The path moved by what the grid may err: all of it alike, but for the ring sum.
+pub(super) fn with_error(path: Path, numerical: f64) -> Path {
+    if numerical == 0.0 {
+        return path;
+    }
+    let factor = 1.0 + numerical;
+    Path {
+        node_to_node: path.node_to_node * factor,
+        added_by_joint: path.added_by_joint * factor,
+        source_to_sink: path.source_to_sink * factor,
+        perfect_contact: path.perfect_contact * factor,
+        hottest: path.hottest * factor,
+        interface_drop: path.interface_drop * factor,
         ..path
     }
 }

@@ -21,13 +21,22 @@ impl Chain<'_> {
         }))
     }
 
-    /// Both faying faces at points in joint coordinates, first case at nominal.
+    /// Both faying faces of the first interface at points in joint coordinates, first case at nominal.
     pub fn face_points(
         &self,
         points: &[[f64; 2]],
     ) -> Result<Option<Vec<Option<FacePoint>>>, Failure> {
+        self.face_points_in(0, points)
+    }
+
+    /// The same of any interface, counted from the warm side.
+    pub fn face_points_in(
+        &self,
+        interface: usize,
+        points: &[[f64; 2]],
+    ) -> Result<Option<Vec<Option<FacePoint>>>, Failure> {
         let solved = self.solved(0)?;
-        Ok(solved.map(|solved| solved.face_points(points)))
+        Ok(solved.map(|solved| solved.face_points(points, interface)))
     }
 
     /// Temperatures on a line through the stack, first case at nominal, per watt above the mean
@@ -35,6 +44,11 @@ impl Chain<'_> {
     pub fn section(&self, across: Across) -> Result<Option<Vec<Section>>, Failure> {
         let solved = self.solved(0)?;
         Ok(solved.and_then(|solved| solved.section(across)))
+    }
+
+    /// What zones too narrow for the grid may leave out of source to sink, first case at nominal, K/W.
+    pub(in crate::estimate) fn left_out(&self) -> Result<f64, Failure> {
+        Ok(self.solved(0)?.map_or(0.0, Solved::left_out))
     }
 
     fn solved(&self, case: usize) -> Result<Option<&dyn Solved>, Failure> {

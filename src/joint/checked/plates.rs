@@ -5,6 +5,7 @@ use std::sync::Arc;
 use crate::{
     catalog::{self, Material},
     joint::{Bounds, FlatnessMap, Sandwich},
+    numerics::distribution::deviations,
 };
 
 /// One plate.
@@ -14,6 +15,8 @@ pub struct Plate {
     pub name: String,
     /// Material, from the catalogue or the file.
     pub material: Material,
+    /// Strength in bending of a brittle plate, Pa, where it is stated.
+    pub flexural_strength: Option<f64>,
     /// Thickness, m.
     pub thickness: f64,
     /// Outline in plan, in the plate's own coordinates.
@@ -157,8 +160,29 @@ pub struct Finish {
     pub slope: f64,
     /// Factor by which the slope may be off either way, one standard deviation.
     pub slope_factor: f64,
+    /// Where the slope may lie, 1, where the file states its spread; it then replaces the factor.
+    pub slope_spread: Option<Bounds>,
     /// What lies on the face.
     pub coating: Option<Coating>,
+}
+
+impl Finish {
+    /// Slope of the asperities at a place of its scatter, 1.
+    pub fn slope_at(&self, place: f64) -> f64 {
+        match self.slope_spread {
+            Some(spread) => spread.at(place),
+            None if self.slope_factor > 1.0 => {
+                self.slope * self.slope_factor.powf(deviations(place))
+            }
+            // An end of the scatter is infinitely far, and no scatter stays none there.
+            None => self.slope,
+        }
+    }
+
+    /// Whether the slope scatters.
+    pub fn slope_scatters(&self) -> bool {
+        self.slope_factor > 1.0 || self.slope_spread.is_some_and(|spread| spread.is_spread())
+    }
 }
 
 /// A plating or film on a face.

@@ -46,7 +46,7 @@ pub(super) fn read(
     })
 }
 
-fn thickness(
+pub(super) fn thickness(
     record: &Record,
     known: Option<&FillerRecord>,
     collector: &mut Collector,
@@ -136,7 +136,9 @@ pub(super) fn spring(
     collector: &mut Collector,
 ) -> Option<Spring> {
     let thickness = match kind {
-        FillerKind::Layer { thickness, .. } => Some(*thickness),
+        FillerKind::Layer { thickness, .. } | FillerKind::Foil { thickness, .. } => {
+            Some(*thickness)
+        }
         FillerKind::Table { .. } if !record.has("table") => record
             .number("bond_line")
             .or_else(|| record.number("thickness"))
@@ -178,8 +180,8 @@ fn no_layer(record: &Record, kind: &FillerKind) -> crate::diagnostic::Fault {
         ),
         FillerKind::Paste { .. } => (
             "a paste",
-            "a paste flows away from the load and does not spread it: leave `modulus` out; for a cured layer state \
-             its `bond_line`",
+            "a paste flows away from the load and does not spread it: leave `modulus` out; a cured layer is \
+             `model = \"layer\"` with its `thickness`",
         ),
         _ => (
             "a fluid",

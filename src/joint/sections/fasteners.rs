@@ -3,7 +3,7 @@
 use crate::{
     joint::{
         fields::{Catalogue, Field, Kind, Measure, Section, field},
-        sections::ISOLATING,
+        sections::{AXIAL_LOAD, DISC_SPRINGS, ISOLATING},
     },
     units::Quantity,
 };
@@ -127,6 +127,27 @@ pub static FASTENER: Section = Section {
         )
         .default("none"),
         field(
+            "disc_springs",
+            Kind::Table(&DISC_SPRINGS),
+            "disc (Belleville) springs under the head or nut of each bolt",
+            "{ outer = \"10 mm\", inner = \"5.2 mm\", thickness = \"0.5 mm\", cone_height = \"0.25 mm\", series = 4 }",
+        )
+        .default("none"),
+        field(
+            "split_washer",
+            Kind::Flag,
+            "whether a split spring washer lies under the head; it adds nothing to the force",
+            "true",
+        )
+        .default("false"),
+        field(
+            "axial_load",
+            Kind::Table(&AXIAL_LOAD),
+            "load from outside along each bolt, pulling the plates apart, or its range",
+            "\"500 N\"",
+        )
+        .default("none"),
+        field(
             "at",
             Kind::Points,
             "places, from the lower left corner of the first plate (round: its centre; outline: as its points)",
@@ -176,6 +197,18 @@ pub static ENGAGEMENT: Section = Section {
         )
         .within(0.0, 0.01)
         .default("0 mm, flush"),
+        field(
+            "pull_out",
+            Kind::Quantity(Quantity::Force),
+            "inserts only: pull-out load by the maker or a test",
+            "\"9 kN\"",
+        )
+        .within(1e-3, 1e8),
+        length(
+            "outer",
+            "inserts only: outer diameter of the insert's own thread in the plate",
+            "\"6.5 mm\"",
+        ),
     ],
 };
 
@@ -187,8 +220,8 @@ pub static TORQUE: Section = Section {
     fields: &[
         field(
             "value",
-            Kind::Quantity(Quantity::Torque),
-            "torque at the wrench, running torque included",
+            Kind::Spread(Measure::Quantity(Quantity::Torque)),
+            "torque at the wrench, running torque included; with a spread it states the tolerance",
             "\"1.7 N·m\"",
         )
         .within(1e-6, 1e6)
@@ -203,8 +236,8 @@ pub static TORQUE: Section = Section {
         .default("5 %"),
         field(
             "running",
-            Kind::Quantity(Quantity::Torque),
-            "running torque of a locking feature",
+            Kind::Spread(Measure::Quantity(Quantity::Torque)),
+            "running torque of a locking feature, or its range",
             "\"0.15 N·m\"",
         )
         .within(0.0, 1e6)

@@ -1,12 +1,18 @@
 //! Fields of fillers and of measurements.
 
 use crate::{
-    joint::fields::{Catalogue, Field, Kind, Section, field},
+    joint::fields::{Catalogue, Field, Kind, Measure, Section, field},
     units::Quantity,
 };
 
 const fn length(key: &'static str, meaning: &'static str, example: &'static str) -> Field {
-    field(key, Kind::Quantity(Quantity::Length), meaning, example).within(1e-8, 0.1)
+    field(
+        key,
+        Kind::Spread(Measure::Quantity(Quantity::Length)),
+        meaning,
+        example,
+    )
+    .within(1e-8, 0.1)
 }
 
 const fn scatter(meaning: &'static str) -> Field {
@@ -40,13 +46,13 @@ pub static FILLER: Section = Section {
         .default("the two plates"),
         field(
             "model",
-            Kind::Choice(&["fluid", "layer", "paste", "table"]),
-            "how it conducts: liquid in the gaps, layer, paste that thins, measured table",
+            Kind::Choice(&["fluid", "foil", "layer", "paste", "table"]),
+            "how it conducts: liquid in the gaps, soft foil that yields, layer, paste that thins, measured table",
             "\"layer\"",
         ),
         field(
             "conductivity",
-            Kind::Quantity(Quantity::Conductivity),
+            Kind::Spread(Measure::Quantity(Quantity::Conductivity)),
             "conductivity of the filler",
             "\"3 W/(m·K)\"",
         )
@@ -58,12 +64,12 @@ pub static FILLER: Section = Section {
         ),
         length(
             "bond_line",
-            "stated bond line of a paste, which is then a layer",
+            "stated bond line of a paste; with `model = \"layer\"` it is solid and fills no opening",
             "\"50 µm\"",
         ),
         field(
             "boundary",
-            Kind::Quantity(Quantity::AreaResistance),
+            Kind::Spread(Measure::Quantity(Quantity::AreaResistance)),
             "resistance of both boundaries of a layer together",
             "\"0.1 K·cm²/W\"",
         )
@@ -76,6 +82,13 @@ pub static FILLER: Section = Section {
             "\"2 MPa\"",
         )
         .within(1e3, 1e12),
+        field(
+            "hardness",
+            Kind::Quantity(Quantity::Pressure),
+            "hardness of a foil that yields under the asperities of both faces",
+            "\"9 MPa\"",
+        )
+        .within(1e4, 1e10),
         field(
             "table",
             Kind::Pairs([Quantity::Pressure, Quantity::AreaResistance]),
@@ -126,7 +139,7 @@ pub static MEASURED: Section = Section {
 /// `law` of `[measured]`.
 pub static MEASURED_LAW: Section = Section {
     name: "law",
-    meaning: "G = conductance (F / force)^force_exponent (T / temperature)^temperature_exponent",
+    meaning: "G = conductance (F / force)^force_exponent (T / temperature)^temperature_exponent, or (M / torque)^torque_exponent",
     shorthand: None,
     fields: &[
         field(
@@ -143,8 +156,22 @@ pub static MEASURED_LAW: Section = Section {
             "reference force",
             "\"1 kN\"",
         )
-        .within(1e-3, 1e8)
-        .required(),
+        .within(1e-3, 1e8),
+        field(
+            "torque",
+            Kind::Quantity(Quantity::Torque),
+            "reference torque of a bolt, in place of the force",
+            "\"2 N·m\"",
+        )
+        .within(1e-6, 1e6),
+        field(
+            "torque_exponent",
+            Kind::Number,
+            "exponent of the torque",
+            "1.0",
+        )
+        .within(-2.0, 5.0)
+        .default("1"),
         field(
             "force_exponent",
             Kind::Number,

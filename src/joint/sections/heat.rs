@@ -1,7 +1,7 @@
 //! Fields of heat: zones that are heated, parts that are cooled.
 
 use crate::{
-    joint::fields::{Field, Kind, Section, field},
+    joint::fields::{Field, Kind, Measure, Section, field},
     units::Quantity,
 };
 
@@ -140,7 +140,7 @@ pub static CONDUCTIVITY: Section = Section {
 const fn conductivity(key: &'static str, meaning: &'static str, example: &'static str) -> Field {
     field(
         key,
-        Kind::Quantity(Quantity::Conductivity),
+        Kind::Spread(Measure::Quantity(Quantity::Conductivity)),
         meaning,
         example,
     )

@@ -38,6 +38,13 @@ pub static PLATE: Section = Section {
             "conductivity in the plane and through the thickness where they differ, in place of the material's",
             "{ in_plane = \"400 W/(m·K)\", through = \"5 W/(m·K)\" }",
         ),
+        field(
+            "flexural_strength",
+            Kind::Quantity(Quantity::Pressure),
+            "strength in bending of a plate of ceramic, glass or a semiconductor",
+            "\"300 MPa\"",
+        )
+        .within(1e5, 1e11),
         length("thickness", "thickness", "\"5 mm\"")
             .within(1e-6, 10.0)
             .required(),
@@ -100,7 +107,7 @@ pub static PLATE: Section = Section {
         .default("as finish"),
         field(
             "emissivity",
-            Kind::Number,
+            Kind::Spread(Measure::Number),
             "hemispherical emissivity of the faying face",
             "0.1",
         )
@@ -306,7 +313,7 @@ pub static FINISH: Section = Section {
         .within(1e-9, 1e-3),
         field(
             "slope",
-            Kind::Number,
+            Kind::Spread(Measure::Number),
             "root-mean-square slope of the asperities",
             "0.11",
         )
@@ -434,7 +441,7 @@ static MATERIAL_FIELDS: [Field; 16] = [
         .default("0.33"),
     field(
         "hardness",
-        Kind::Quantity(Quantity::Pressure),
+        Kind::Spread(Measure::Quantity(Quantity::Pressure)),
         "Meyer hardness: mean pressure over the projected area of an indentation",
         "\"1200 MPa\"",
     )
@@ -491,7 +498,7 @@ pub static MICROHARDNESS: Section = Section {
     fields: &[
         field(
             "c1",
-            Kind::Quantity(Quantity::Pressure),
+            Kind::Spread(Measure::Quantity(Quantity::Pressure)),
             "hardness at an indentation of 1 µm",
             "\"6.3 GPa\"",
         )

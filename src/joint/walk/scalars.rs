@@ -1,14 +1,12 @@
-//! Single values and spreads of them.
+//! Single values.
 
 use crate::{
     joint::{
-        Bounds,
         collector::{Wording, fault},
-        fields::{Catalogue, Kind, Measure, SPREAD_KEYS, listed},
+        fields::{Catalogue, Kind, Measure},
         materials,
-        record::{Spread, Width},
         tree::{Form, short},
-        walk::{Stated, Walk, range, spread_key},
+        walk::{Stated, Walk, range},
     },
     units::{self, Quantity, UnitFault},
 };
@@ -58,16 +56,7 @@ impl Walk<'_> {
                 fault(
                     "name/unknown",
                     &stated.node.span,
-                    format!(
-                        "`{}` is not {} {} this file can name",
-                        short(&text),
-                        if stated.field.key.starts_with(['a', 'e', 'i', 'o', 'u']) {
-                            "an"
-                        } else {
-                            "a"
-                        },
-                        stated.field.key
-                    ),
+                    format!("`{}` is no choice of `{}`", short(&text), stated.field.key),
                 )
                 .expecting(format!("expected {}", stated.field.kind.expects()))
                 .nearest(&text, words.iter().copied()),
@@ -120,13 +109,23 @@ impl Walk<'_> {
                 .and_then(|text| self.told(stated, units::parse(text, quantity))),
             Measure::Roughness => self.roughness(stated),
         }?;
-        if range(stated.field).contains(&value) {
-            return Some(value);
-        }
         let written = match &stated.node.form {
             Form::Text(text) | Form::Number(text, _) => short(text),
             _ => String::new(),
         };
+        self.in_range(stated, (value, measure), &written)
+    }
+
+    /// A value that lies within the range of its field, which is told where it does not.
+    pub(super) fn in_range(
+        &mut self,
+        stated: Stated<'_>,
+        (value, measure): (f64, Measure),
+        written: &str,
+    ) -> Option<f64> {
+        if range(stated.field).contains(&value) {
+            return Some(value);
+        }
         let [least, greatest] = stated.field.range;
         self.collector.report(
             fault(
@@ -143,94 +142,6 @@ impl Walk<'_> {
                 shown(greatest, measure)
             ))
             .help(format!("for example `{}`", stated.field.line())),
-        );
-        None
-    }
-
-    /// One value, `[low, high]`, `[low, nominal, high]`, or a table of these.
-    pub(super) fn spread(&mut self, stated: Stated<'_>, measure: Measure) -> Option<Spread> {
-        let mut parts = [None; 3];
-        match &stated.node.form {
-            Form::List(nodes) => {
-                let places: &[usize] = match nodes.len() {
-                    2 => &[0, 2],
-                    3 => &[0, 1, 2],
-                    _ => {
-                        self.wrong(stated);
-                        return None;
-                    }
-                };
-                let read: Vec<Option<f64>> = nodes
-                    .iter()
-                    .map(|node| self.single(Stated { node, ..stated }, measure))
-                    .collect();
-                for (place, value) in places.iter().zip(read) {
-                    parts[*place] = Some(value?);
-                }
-            }
-            Form::Table(entries) => {
-                for (key, node) in entries {
-                    let Some(place) = spread_key(&key.name) else {
-                        self.collector.report(
-                            fault(
-                                "file/unknown-key",
-                                &key.span,
-                                format!("unknown key `{}`", short(&key.name)),
-                            )
-                            .expecting(format!("expected {}", listed(&SPREAD_KEYS)))
-                            .nearest(&key.name, SPREAD_KEYS.into_iter()),
-                        );
-                        return None;
-                    };
-                    parts[place] = Some(self.single(Stated { node, ..stated }, measure)?);
-                }
-            }
-            _ => {
-                return self.single(stated, measure).map(|value| Spread {
-                    bounds: Bounds::exact(value),
-                    width: Width::Single,
-                });
-            }
-        }
-        self.bounds(stated, parts)
-    }
-
-    fn bounds(&mut self, stated: Stated<'_>, parts: [Option<f64>; 3]) -> Option<Spread> {
-        let bounds = match parts {
-            [Some(low), Some(nominal), Some(high)] => Bounds { low, nominal, high },
-            [Some(low), None, Some(high)] => Bounds {
-                low,
-                nominal: f64::midpoint(low, high),
-                high,
-            },
-            [None, Some(nominal), None] => {
-                return Some(Spread {
-                    bounds: Bounds::exact(nominal),
-                    width: Width::Single,
-                });
-            }
-            _ => {
-                self.wrong_with(
-                    stated,
-                    "give low and high, with or without nominal".to_owned(),
-                );
-                return None;
-            }
-        };
-        if bounds.low <= bounds.nominal && bounds.nominal <= bounds.high {
-            return Some(Spread {
-                bounds,
-                width: Width::Range,
-            });
-        }
-        self.collector.report(
-            fault(
-                "value/min-above-max",
-                &stated.node.span,
-                format!("the values of `{}` do not rise", stated.field.key),
-            )
-            .expecting("expected low ≤ nominal ≤ high")
-            .help("give the lowest first"),
         );
         None
     }
@@ -256,6 +167,11 @@ impl Walk<'_> {
 
     fn roughness(&mut self, stated: Stated<'_>) -> Option<f64> {
         let text = self.measured(stated, Measure::Roughness)?;
+        self.roughness_of(stated, text)
+    }
+
+    /// Rq of a text, m.
+    pub(super) fn roughness_of(&mut self, stated: Stated<'_>, text: &str) -> Option<f64> {
         let roughness = units::parse_roughness(text);
         let roughness = self.told(stated, roughness)?;
         if let Some(assumed) = roughness.assumed {
@@ -290,7 +206,11 @@ impl Walk<'_> {
         None
     }
 
-    fn told<T>(&mut self, stated: Stated<'_>, parsed: Result<T, UnitFault>) -> Option<T> {
+    pub(super) fn told<T>(
+        &mut self,
+        stated: Stated<'_>,
+        parsed: Result<T, UnitFault>,
+    ) -> Option<T> {
         match parsed {
             Ok(value) => Some(value),
             Err(unit) => {
@@ -307,7 +227,7 @@ impl Walk<'_> {
         }
     }
 
-    fn wrong_with(&mut self, stated: Stated<'_>, help: String) {
+    pub(super) fn wrong_with(&mut self, stated: Stated<'_>, help: String) {
         self.collector.report(
             super::wrong_type(
                 stated.node,
@@ -325,7 +245,7 @@ fn plain(word: &str) -> String {
 }
 
 /// A limit of a field, for a label.
-fn shown(value: f64, measure: Measure) -> String {
+pub(super) fn shown(value: f64, measure: Measure) -> String {
     match measure {
         Measure::Quantity(quantity) => units::show(value, quantity),
         Measure::Roughness => units::show(value, Quantity::Length),

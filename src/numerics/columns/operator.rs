@@ -155,6 +155,12 @@ impl<F: Form> Operator<F> {
         }
     }
 
+    /// Both unknowns that a tie joins; twice the same where it holds to the ground.
+    pub fn ends(&self, tie: usize) -> [usize; 2] {
+        let coupling = &self.matrix.couplings[tie];
+        [coupling.plus, coupling.minus.unwrap_or(coupling.plus)]
+    }
+
     /// The matrix times `values`, into `image`.
     pub fn product(&self, values: &[f64], image: &mut [f64]) {
         let [nx, ny] = self.matrix.lines;

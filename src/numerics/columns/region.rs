@@ -131,6 +131,35 @@ impl Region {
         weights
     }
 
+    /// Integrals of the products of two corner functions of a cell over it; the corners as in
+    /// [`Plan::corners`].
+    pub fn masses(&self, plan: &Plan, cell: usize) -> [[f64; 4]; 4] {
+        /// Two, one or no lines of a cell shared by two corners.
+        const WHOLE: [[f64; 4]; 4] = [
+            [4.0, 2.0, 2.0, 1.0],
+            [2.0, 4.0, 1.0, 2.0],
+            [2.0, 1.0, 4.0, 2.0],
+            [1.0, 2.0, 2.0, 4.0],
+        ];
+        let area = plan.cell_area(cell);
+        if count(&self.cells[cell]) as usize == SIDE * SIDE {
+            return WHOLE.map(|row| row.map(|part| part / 36.0 * area));
+        }
+        let [x, y] = plan.cell_sides(cell);
+        let along = |[low, high]: [f64; 2], at: f64| (at - low) / (high - low);
+        let mut masses = [[0.0; 4]; 4];
+        self.each_sample(plan, cell, |place, area| {
+            let (s, t) = (along(x, place[0]), along(y, place[1]));
+            let at = [(1.0 - s) * (1.0 - t), (1.0 - s) * t, s * (1.0 - t), s * t];
+            for (row, one) in masses.iter_mut().zip(at) {
+                for (mass, other) in row.iter_mut().zip(at) {
+                    *mass += one * other * area;
+                }
+            }
+        });
+        masses
+    }
+
     /// Integral of every column's bilinear function over the whole of the cells it reaches into.
     pub fn full_weights(&self, plan: &Plan) -> Vec<f64> {
         let mut weights = vec![0.0; plan.columns()];

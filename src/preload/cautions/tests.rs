@@ -121,11 +121,7 @@ fn threads_are_judged_by_length_insert_and_metal() {
 
 #[test]
 fn dry_stainless_screw_and_nut_gall() {
-    let dry = Bounds {
-        low: 0.2,
-        nominal: 0.25,
-        high: 0.35,
-    };
+    let dry = Bounds::uniform([0.2, 0.25, 0.35]);
     for friction in [
         Friction::Coefficients {
             thread: dry,

@@ -21,6 +21,8 @@ pub(super) enum Start<'a> {
     Bolts,
     /// Where a field stood.
     Field(&'a Field),
+    /// Where a field of a coarser grid touches.
+    Coarser(&'a Field),
     /// Where a rule says.
     Set(&'a (dyn Fn([f64; 2]) -> bool + Sync)),
 }
@@ -150,12 +152,21 @@ fn first_set(problem: &Problem, mesh: &Mesh, system: &System, start: &Start) -> 
         .iter()
         .enumerate()
         .map(|(index, pairing)| {
+            let coarse = match start {
+                Start::Coarser(field) => field.state.active.get(index).map(|set| (field, set)),
+                _ => None,
+            };
             let touches = |column: usize| {
                 let place = mesh.plan.place(column);
                 match start {
                     // Heads and nuts touch all over at first.
                     _ if index >= interfaces => true,
                     Start::Set(rule) => rule(place),
+                    Start::Coarser(_) => coarse.is_some_and(|(field, set)| {
+                        let around = field.mesh.plan.around(place).into_iter().flatten();
+                        let touching = around.filter(|(column, _)| set[*column]);
+                        touching.map(|(_, weight)| weight).sum::<f64>() > 0.5
+                    }),
                     _ => near(place),
                 }
             };

@@ -106,6 +106,7 @@ pub fn fillers(records: &[FillerRecord]) -> Listing {
                         "thickness": datum_if(record.thickness.as_ref()),
                         "thinnest": datum_if(record.thinnest.as_ref()),
                         "modulus": datum_if(record.modulus.as_ref()),
+                        "hardness": datum_if(record.hardness.as_ref()),
                         "points": record.points,
                         "creeps": record.creeps,
                         "silicone": record.silicone,

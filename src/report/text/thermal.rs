@@ -1,10 +1,10 @@
 //! The thermal part of the report: results with their planes, verdict, cases, drivers.
 
 use crate::{
-    estimate::{Band, CaseResult, Driver, Estimate, Met, RequirementResult},
+    estimate::{Band, CaseResult, Checkpoint, Driver, Estimate, Met, RequirementResult, Sampling},
     joint::{Limit, Plane, RequirementKind},
     report::{
-        number::{band, four, inverse, optional, spread, wrapped},
+        number::{band, four, inverse, optional, percent, spread, wrapped},
         table::{Side, aligned},
         text::{WIDTH, wrapped_after},
     },
@@ -72,7 +72,45 @@ pub fn results(case: &CaseResult) -> String {
     }
     text.push_str(&scaled(case));
     text.push_str(&bounds(case));
+    text.push_str(&case.sampling.as_ref().map_or_else(String::new, sampling));
     text
+}
+
+/// How the ends of source to sink settle with the draws, with one standard error.
+fn sampling(sampling: &Sampling) -> String {
+    let end = |of: fn(&Checkpoint) -> f64, error: f64| {
+        let values: Vec<f64> = sampling.course.iter().map(of).collect();
+        let last = values.last().copied().unwrap_or(f64::NAN);
+        let values: Vec<String> = values.into_iter().map(four).collect();
+        format!("{} ± {}", values.join(", "), percent(error / last))
+    };
+    let line = format!(
+        "source to sink after ¼, ½, all draws: low {}; high {}",
+        end(|point| point.low, sampling.source_to_sink[0]),
+        end(|point| point.high, sampling.source_to_sink[1]),
+    );
+    format!("{}\n", wrapped(&line, WIDTH, 2))
+}
+
+/// Least and most with every input at the end that leads there, beside the band of the draws.
+pub fn worst(estimate: &Estimate, case: &CaseResult) -> String {
+    let Some(worst) = case.worst else {
+        return String::new();
+    };
+    let told =
+        |name: &str, [least, most]: [f64; 2]| format!("{name} {} to {}", four(least), four(most));
+    let all = [
+        told("contact only", worst.contact),
+        told("node to node", worst.node_to_node),
+        told("added by joint", worst.added_by_joint),
+        told("source to sink", worst.source_to_sink),
+    ];
+    let line = format!(
+        "worst cases K/W, every input at its end (3 sigma where it has none), bolts {}: {}",
+        estimate.bolts_scatter,
+        all.join("; ")
+    );
+    format!("{}\n", wrapped(&line, WIDTH, 2))
 }
 
 /// The conductances per area and per bolt, for those who must compare.
@@ -127,6 +165,13 @@ pub fn verdict(estimate: &Estimate, case: &CaseResult) -> String {
         );
         if let Some(drop) = rise.coolant_drop {
             let _ = write!(text, "; sink surface to coolant {} K", four(drop));
+        }
+        if case.sink_radiates {
+            let _ = write!(
+                text,
+                "; the radiating sink surface settles at {:.1} °C",
+                case.sink_temperature - ICE_POINT
+            );
         }
         text = wrapped(&text, WIDTH, 2);
         text.push('\n');

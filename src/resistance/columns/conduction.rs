@@ -6,7 +6,7 @@ use crate::resistance::{
     Failure,
     columns::{
         Conductivity, Health, Heat, Stack, Terminals,
-        equations::{Arrangement, Equations, TOLERANCE},
+        equations::{Arrangement, Equations, Family, Reduced, TOLERANCE},
         readings::{Reader, blocked},
         terminals::Ends,
     },
@@ -19,6 +19,7 @@ pub struct Conduction {
     conductivity: Vec<Conductivity>,
     ends: Ends,
     equations: Equations,
+    reduced: Option<Reduced>,
     /// Residual asked for, over the load; readings are off by far less.
     pub tolerance: f64,
 }
@@ -54,7 +55,7 @@ impl Perfect {
         (terminals, conductivity): (&Terminals, &[Conductivity]),
     ) -> Result<Self, Failure> {
         let mut equations =
-            Equations::new(stack, ends, (terminals, conductivity), Arrangement::Merged)?;
+            Equations::new(stack, ends, (terminals, conductivity), Arrangement::Merged);
         let health = equations.solve()?;
         let rise = equations.source_mean() - equations.sink_mean();
         Ok(Self {
@@ -63,6 +64,21 @@ impl Perfect {
             source_to_sink: rise / equations.heat(),
             health,
         })
+    }
+
+    /// Stands where nobody asks for perfect contact: not a number.
+    pub fn unknown() -> Self {
+        Self {
+            conductivity: Vec::new(),
+            strengths: Vec::new(),
+            source_to_sink: f64::NAN,
+            health: Health {
+                iterations: 0,
+                residual: f64::NAN,
+                balance: f64::NAN,
+                unknowns: 0,
+            },
+        }
     }
 
     /// Whether this is the perfect contact of such bodies and bolts in the same stack.
@@ -90,24 +106,24 @@ impl Conduction {
     ) -> Result<Self, Failure> {
         check(stack, terminals, conductivity)?;
         let ends = Ends::new(stack, terminals)?;
-        Self::of(stack, ends, (terminals, conductivity))
+        Ok(Self::of(stack, ends, (terminals, conductivity)))
     }
 
     fn of(
         stack: &Arc<Stack>,
         ends: Ends,
         (terminals, conductivity): (&Terminals, &[Conductivity]),
-    ) -> Result<Self, Failure> {
-        let equations =
-            Equations::new(stack, &ends, (terminals, conductivity), Arrangement::Apart)?;
-        Ok(Self {
+    ) -> Self {
+        let equations = Equations::new(stack, &ends, (terminals, conductivity), Arrangement::Apart);
+        Self {
             stack: stack.clone(),
             terminals: terminals.clone(),
             conductivity: conductivity.to_vec(),
             ends,
             equations,
+            reduced: None,
             tolerance: TOLERANCE,
-        })
+        }
     }
 
     /// Heat under local conductances, W/(m² K): one for every column of every part of an interface.
@@ -136,7 +152,47 @@ impl Conduction {
         self.equations.join(&conductances)?;
         self.equations.tolerance = self.tolerance;
         let health = self.equations.solve()?;
-        let heat = self.reader(&conductances).heat(&self.equations, health);
+        self.read(&conductances, health)
+    }
+
+    /// Heat under local conductances as the best sum of the temperatures of a family: the one that
+    /// leaves least energy of the error.
+    ///
+    /// ```text
+    /// T = Σ a_m T_m,   Σ_n (T_mᵀ A T_n) a_n = T_mᵀ f
+    /// ```
+    ///
+    /// `A` and `f` are those of [`Conduction::solve`]. The resistance is off by the square of what the
+    /// temperatures are off by; how much that is the caller finds at states that are solved.
+    /// Checked: `states_between_solved_ones_are_sums_of_these`.
+    pub fn combined(
+        &mut self,
+        family: &Family,
+        conductance: &[Vec<Vec<f64>>],
+    ) -> Result<Heat, Failure> {
+        let conductances = self.conductances(conductance)?;
+        if blocked(&self.terminals, &self.ends, &conductances) {
+            return Ok(self.reader(&conductances).blocked());
+        }
+        if !family.fits(self.equations.rise.len()) {
+            return Err(Failure::Misfit {
+                what: "a family needs states of this stack",
+            });
+        }
+        let known = self.reduced.take().filter(|known| known.serves(family));
+        let reduced = known.unwrap_or_else(|| self.equations.reduced(family));
+        let health = self.equations.combine(&reduced, &conductances);
+        self.reduced = Some(reduced);
+        self.read(&conductances, health?)
+    }
+
+    /// Temperatures of the last solution, for a [`Family`].
+    pub fn state(&self) -> &[f64] {
+        &self.equations.rise
+    }
+
+    fn read(&self, conductances: &[Vec<Vec<f64>>], health: Health) -> Result<Heat, Failure> {
+        let heat = self.reader(conductances).heat(&self.equations, health);
         for (reading, value) in [
             ("source to sink", heat.source_to_sink),
             ("hottest", heat.hottest.rise),
@@ -216,7 +272,7 @@ pub fn solve_both(
     let given = (terminals, conductivity);
     let (real, perfect) = rayon::join(
         || {
-            let mut conduction = Conduction::of(stack, ends.clone(), given)?;
+            let mut conduction = Conduction::of(stack, ends.clone(), given);
             let heat = conduction.solve(conductance)?;
             Ok::<_, Failure>((conduction, heat))
         },

@@ -1,5 +1,10 @@
 //! The equations of a stack with its terminals, and their solution.
 
+mod family;
+
+pub use family::Family;
+pub(super) use family::Reduced;
+
 use crate::{
     numerics::{
         columns::{Conductor, Layer, Operator, Scalar, Tie, lumped},
@@ -24,7 +29,8 @@ const HELD: f64 = 1e6;
 const HELD_LIGHTLY: f64 = 1e4;
 /// Residual asked for, over the load.
 pub(super) const TOLERANCE: f64 = 1e-8;
-/// Heat that may be lost between source and sink before the residual is made smaller.
+/// Heat that may be lost between source and sink before the residual is made smaller; more where more
+/// residual is asked for.
 const BALANCE: f64 = 1e-9;
 /// Heat that may be lost before the solution is refused.
 const LOST: f64 = 1e-6;
@@ -47,7 +53,8 @@ pub(super) enum Arrangement {
 /// One set of equations, ready for any local conductance.
 pub(super) struct Equations {
     operator: Operator<Scalar>,
-    multigrid: Multigrid<Scalar>,
+    /// Made when it is first needed.
+    multigrid: Option<Multigrid<Scalar>>,
     /// For every body its group and its lowest node there.
     places: Vec<[usize; 2]>,
     /// For every part of every interface its tie.
@@ -74,7 +81,7 @@ impl Equations {
         ends: &Ends,
         (terminals, conductivity): (&Terminals, &[Conductivity]),
         arrangement: Arrangement,
-    ) -> Result<Self, Failure> {
+    ) -> Self {
         let (groups, places) = arranged(stack, arrangement);
         let mut operator = Operator::<Scalar>::new(&stack.plan, &groups);
         for (index, body) in stack.bodies.iter().enumerate() {
@@ -180,11 +187,10 @@ impl Equations {
                 load[*place] += share * weight * gripped.unwrap_or(1.0);
             }
         }
-        let multigrid = Multigrid::new(&operator, Coarsening::FULL).map_err(|_| stopped(0, 1.0))?;
-        Ok(Self {
+        Self {
             rise: operator.zeros(),
             operator,
-            multigrid,
+            multigrid: None,
             places,
             ties,
             load,
@@ -194,7 +200,7 @@ impl Equations {
             tolerance: TOLERANCE,
             beside,
             threads,
-        })
+        }
     }
 
     /// Place of a node in the vector of temperatures.
@@ -221,9 +227,11 @@ impl Equations {
                 self.operator.set_tie(*tie, &guided);
             }
         }
-        self.multigrid
-            .renew(&self.operator, Factor::Renewed)
-            .map_err(|_| stopped(0, 1.0))?;
+        let guided = match &mut self.multigrid {
+            Some(multigrid) => multigrid.renew(&self.operator, Factor::Renewed),
+            none => Multigrid::new(&self.operator, Coarsening::FULL).map(|new| *none = Some(new)),
+        };
+        guided.map_err(|_| stopped(0, 1.0))?;
         for (parts, ties) in conductances.iter().zip(&self.ties) {
             for (part, tie) in parts.iter().zip(ties) {
                 self.operator.set_tie(*tie, part);
@@ -243,6 +251,11 @@ impl Equations {
             unknowns: self.operator.unknowns(),
         };
         let mut tolerance = self.tolerance;
+        let balanced = BALANCE * (self.tolerance / TOLERANCE).max(1.0);
+        if self.multigrid.is_none() {
+            let new = Multigrid::new(&self.operator, Coarsening::FULL);
+            self.multigrid = Some(new.map_err(|_| stopped(0, 1.0))?);
+        }
         for _ in 0..ROUNDS {
             // A held source loads the equations with far more than passes through them: what
             // passes is the measure. It is known after the first round.
@@ -257,9 +270,12 @@ impl Equations {
                 reference: Some(unit * heat),
                 most: MOST,
             };
+            let Some(multigrid) = &mut self.multigrid else {
+                break;
+            };
             let solved = conjugate_gradients(
                 &self.operator,
-                &mut self.multigrid,
+                multigrid,
                 (&self.load, &mut self.rise),
                 &effort,
             );
@@ -275,7 +291,7 @@ impl Equations {
                 return Err(stopped(health.iterations, residual));
             }
             let settled = self.gripped.is_none() || done > 0;
-            if stalled || settled && health.balance <= BALANCE {
+            if stalled || settled && health.balance <= balanced {
                 break;
             }
             if settled {

@@ -3,6 +3,8 @@
 mod bank;
 mod edges;
 mod heat;
+mod many;
+mod narrow;
 mod problem;
 mod readings;
 mod sandwich;
@@ -19,7 +21,7 @@ use crate::{
             conditions::Conditions,
             elastic::{
                 level::{GROUND, Level},
-                solver::{Factors, Solved, Solver},
+                solver::{Factors, Solved, Solver, State},
                 variant::Variant,
             },
         },
@@ -31,6 +33,7 @@ use crate::{
 
 use bank::{Bank, Wanted};
 use heat::{Conductances, conductances};
+use many::Load;
 use problem::Order;
 use readings::{initial, shares, widest};
 
@@ -53,13 +56,15 @@ struct OnColumns {
     field: Arc<Field>,
     heat: Heat,
     path: Path,
+    /// What narrow zones leave out of source to sink, K/W.
+    left_out: f64,
     order: Order,
     /// What touches and what is parted of every interface have in the resistance.
     shares: Vec<[f64; 2]>,
-    /// Local conductances of the first interface.
-    first: Vec<Vec<f64>>,
-    /// Pressures for drawings.
-    shown: OnceLock<Vec<f64>>,
+    /// Local conductances of every interface, from warm to cold.
+    faces: Conductances,
+    /// Pressures for drawings, of every interface of the field.
+    shown: Vec<OnceLock<Vec<f64>>>,
 }
 
 impl Columns {
@@ -99,20 +104,64 @@ impl Solver for Columns {
     ) -> Result<Arc<dyn Solved>, Failure> {
         let field = self.field(joint, (level, variant), conditions)?;
         let plates = self.bank.plates(joint, level, &field)?;
-        let mut faces: Conductances = conductances(&field, self.bank.order, (conditions, factors));
+        let faces: Conductances = conductances(&field, self.bank.order, (conditions, factors));
         let (heat, path) = plates
             .solve(&faces, &factors.conductivity(conditions), conditions)
             .map_err(Failure::Heat)?;
         let order = self.bank.order;
         Ok(Arc::new(OnColumns {
+            left_out: narrow::left_out(joint, conditions),
             shares: shares((&field, order), &heat, &faces),
             order,
             field,
             heat,
             path,
-            first: faces.swap_remove(0),
-            shown: OnceLock::new(),
+            shown: faces.iter().map(|_| OnceLock::new()).collect(),
+            faces,
         }))
+    }
+
+    fn expect(
+        &self,
+        joint: &Joint,
+        task: (Level, Variant),
+        conditions: &Conditions,
+    ) -> Result<(), Failure> {
+        self.field(joint, task, conditions).map(|_| ())
+    }
+
+    /// Contacts are solved one after the other, each on all cores; then the heat of all side by side.
+    /// So no thread decides where a solution starts.
+    fn paths(&self, joint: &Joint, level: Level, states: &[State]) -> Result<Vec<Path>, Failure> {
+        let order = self.bank.order;
+        let mut plates = None;
+        let mut loads = Vec::with_capacity(states.len());
+        let mut last: Option<(&State, Arc<Field>)> = None;
+        for state in states {
+            let under = (&state.conditions, &state.factors);
+            let same = |(last, _): &&(&State, Arc<Field>)| {
+                last.variant == state.variant && last.conditions.forces == state.conditions.forces
+            };
+            let field = match last.as_ref().filter(same) {
+                Some((_, field)) => field.clone(),
+                None => self.field(joint, (level, state.variant), under.0)?,
+            };
+            last = Some((state, field.clone()));
+            loads.push(Load {
+                faces: conductances(&field, order, under),
+                in_plane: state.factors.conductivity(&state.conditions),
+                depth: state.depth,
+            });
+            if plates.is_none() {
+                plates = Some(self.bank.plates(joint, level, &field)?);
+            }
+        }
+        let (Some(plates), Some(first)) = (plates, states.first()) else {
+            return Ok(Vec::new());
+        };
+        plates
+            .paths(&loads, &first.conditions)
+            .map_err(Failure::Heat)
     }
 
     fn tabulate(

@@ -1,9 +1,11 @@
 //! How the resistances answer to force, faces and conductivities: surfaces for the draws.
 
+use serde_json::{Value, json};
+
 use crate::{
     estimate::chain::{
         conditions::Conditions,
-        elastic::solver::{Met, variable},
+        elastic::solver::{Depth, Met, variable},
     },
     numerics::surface::{Surface, design},
     resistance::Path,
@@ -37,6 +39,8 @@ const PROBES: [[f64; VARIABLES]; 4] = [
 /// Departure of a state from the nominal one: logarithms of ratios; the force is −∞ where none is
 /// left.
 pub(super) type Departure = [f64; VARIABLES];
+/// The departure of the nominal state.
+pub(super) const NOMINAL: Departure = [0.0; VARIABLES];
 
 /// Half widths of the design of a joint of so many plates.
 pub(super) fn steps(plates: usize) -> &'static [f64] {
@@ -85,6 +89,22 @@ impl Gauge {
             faces: faces.collect(),
             conductivity: conditions.conductivity.clone(),
         }
+    }
+
+    /// The nominal state as data.
+    pub(super) fn tables(&self) -> Value {
+        let faces = self.faces.iter();
+        json!({
+            "force": self.force,
+            "conductivity": self.conductivity,
+            "faces": faces.map(|face| json!({
+                "pressure": face.met.pressure,
+                "gap": face.met.gap,
+                "shares": face.met.shares,
+                "touching": face.touching,
+                "parted": face.parted,
+            })).collect::<Vec<Value>>(),
+        })
     }
 
     /// Nominal force of all bolts, N.
@@ -167,7 +187,7 @@ fn weighted(values: &(impl Iterator<Item = (f64, f64)> + Clone)) -> f64 {
 ///
 /// What the joint adds is read as a logarithm where it is above zero in every solution, and as a
 /// share of source to sink where it is nothing within rounding.
-type Readings = [f64; 7];
+pub(super) type Readings = [f64; 7];
 
 /// The answers of one case over a range of force.
 ///
@@ -176,16 +196,16 @@ type Readings = [f64; 7];
 #[derive(Clone, Debug)]
 pub(super) struct Response {
     /// Half widths of the design, one for each variable besides the force.
-    steps: &'static [f64],
+    pub(super) steps: &'static [f64],
     /// Logarithms of the force over the nominal one, rising.
-    forces: Vec<f64>,
+    pub(super) forces: Vec<f64>,
     /// One for each force and reading.
-    surfaces: Vec<[Surface; 7]>,
+    pub(super) surfaces: Vec<[Surface; 7]>,
     /// The path when no force is left and the faces only lie on each other; none where no draw
     /// comes to that.
-    open: Option<Path>,
+    pub(super) open: Option<Path>,
     /// The nominal path on the level of the surfaces.
-    base: Path,
+    pub(super) base: Path,
     /// Largest error of source to sink at the probes, relative.
     pub(super) error: f64,
 }
@@ -194,11 +214,11 @@ impl Response {
     /// Solves the designs and the probes, and lays the surfaces through the former.
     ///
     /// `range` is the least and the largest force over the nominal, with the half widths of the
-    /// design; `solve` finds the paths of many
-    /// departures, `open` that without force.
+    /// design; `solve` finds the paths of many departures, each as deep as it says; `open` is the
+    /// one without force.
     pub(super) fn through<E>(
         (range, steps): ([f64; 2], &'static [f64]),
-        solve: impl Fn(&[Departure]) -> Result<Vec<Path>, E>,
+        solve: impl Fn(&[(Departure, Depth)]) -> Result<Vec<Path>, E>,
         open: Option<Path>,
     ) -> Result<Self, E> {
         let forces = forces(range);
@@ -221,7 +241,18 @@ impl Response {
                 .collect();
             at(force, &rest)
         }));
-        let paths = solve(&points)?;
+        let asked: Vec<(Departure, Depth)> = points
+            .iter()
+            .enumerate()
+            .map(|(place, departure)| {
+                if place < solutions {
+                    (*departure, depth(departure, ends))
+                } else {
+                    (*departure, Depth::SourceToSink)
+                }
+            })
+            .collect();
+        let paths = solve(&asked)?;
         let (designs, probes) = paths.split_at(solutions);
         let read: Vec<Readings> = designs.iter().map(readings).collect();
         let centre = solutions_at_nominal(&forces, alone);
@@ -278,11 +309,21 @@ impl Response {
 
     /// The path at a departure on the level of the surfaces themselves.
     pub(super) fn alone(&self, departure: &Departure) -> Path {
-        self.applied(&self.base, (&[0.0; VARIABLES], departure))
+        self.applied(&self.base, (&NOMINAL, departure))
     }
 
     /// A path of a finer solution at one departure, moved to another as the surfaces say.
-    pub(super) fn applied(&self, path: &Path, (from, to): (&Departure, &Departure)) -> Path {
+    pub(super) fn applied(&self, path: &Path, ends: (&Departure, &Departure)) -> Path {
+        self.shifted(path, ends, &[0.0; 7])
+    }
+
+    /// The same with what the pattern of the forces adds to the readings.
+    pub(super) fn shifted(
+        &self,
+        path: &Path,
+        (from, to): (&Departure, &Departure),
+        shift: &Readings,
+    ) -> Path {
         if let (f64::NEG_INFINITY, Some(open)) = (to[0], &self.open) {
             return Path {
                 coolant_drop: path.coolant_drop,
@@ -291,7 +332,7 @@ impl Response {
         }
         let (there, here) = (self.at(to), self.at(from));
         let [contact, perfect, added, node, interface, hottest, joint]: Readings =
-            std::array::from_fn(|reading| there[reading] - here[reading]);
+            std::array::from_fn(|reading| there[reading] - here[reading] + shift[reading]);
         let perfect_contact = path.perfect_contact * perfect.exp();
         let added_by_joint = if added.is_finite() {
             path.added_by_joint * added.exp()
@@ -314,7 +355,7 @@ impl Response {
     }
 
     /// Readings at a departure.
-    fn at(&self, departure: &Departure) -> Readings {
+    pub(super) fn at(&self, departure: &Departure) -> Readings {
         let [force, rest @ ..] = departure;
         let rest = &rest[..self.steps.len()];
         let last = self.forces.len() - 1;
@@ -369,9 +410,17 @@ pub(super) fn bounded(range: [f64; 2]) -> Vec<f64> {
     }
 }
 
-/// A departure of the force alone.
-pub(super) fn at_force(force: f64) -> Departure {
-    at(force, &[0.0; VARIABLES - 1])
+/// Solved are the middle of every design, all points along one variable at the nominal force and
+/// those along the contact at both ends of the force; the heat of the others is between them.
+fn depth([force, rest @ ..]: &Departure, ends: [f64; 2]) -> Depth {
+    let moved = rest.iter().filter(|each| **each != 0.0).count();
+    let contact_alone = moved == 1 && rest[0] != 0.0;
+    match moved {
+        0 => Depth::Solved,
+        1 if *force == 0.0 => Depth::Solved,
+        1 if contact_alone && ends.contains(force) => Depth::Solved,
+        _ => Depth::Between,
+    }
 }
 
 fn at(force: f64, rest: &[f64]) -> Departure {
@@ -428,7 +477,7 @@ fn surfaces((forces, steps): (&[f64], &[f64]), read: &[Readings]) -> Vec<[Surfac
         .collect()
 }
 
-fn readings(path: &Path) -> Readings {
+pub(super) fn readings(path: &Path) -> Readings {
     let whole = path.source_to_sink;
     [
         path.contact.ln(),

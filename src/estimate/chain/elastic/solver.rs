@@ -2,6 +2,8 @@
 
 use std::{fmt::Debug, sync::Arc};
 
+use rayon::prelude::*;
+
 use crate::{
     estimate::{
         ConeBeside, FacePoint, Failure, Flatness, InterfaceResult, Meeting, PressureResult,
@@ -56,6 +58,26 @@ pub(super) fn variable(plate: usize, last: usize) -> usize {
     }
 }
 
+/// How much of a state's path is wanted, and how well.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub(super) enum Depth {
+    /// Solved for itself.
+    Solved,
+    /// The same for source to sink alone; what tells the joint from the plates is not looked for.
+    SourceToSink,
+    /// Put together from those that are solved, where that is cheaper.
+    Between,
+}
+
+/// A state whose path is asked for.
+#[derive(Clone, Debug)]
+pub(super) struct State {
+    pub(super) variant: Variant,
+    pub(super) conditions: Conditions,
+    pub(super) factors: Factors,
+    pub(super) depth: Depth,
+}
+
 /// How the faces of an interface meet as a whole, for the surfaces of the draws.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub(in crate::estimate::chain) struct Met {
@@ -77,6 +99,23 @@ pub(super) trait Solver: Debug + Send + Sync {
         task: (Level, Variant),
         under: (&Conditions, &Factors),
     ) -> Result<Arc<dyn Solved>, Failure>;
+
+    /// Solves the contact alone, to be found when heat asks for it.
+    fn expect(&self, _: &Joint, _: (Level, Variant), _: &Conditions) -> Result<(), Failure> {
+        Ok(())
+    }
+
+    /// Paths of many states on one level for the draws, to about 1e-6.
+    ///
+    /// They differ in forces, faces, conductivities and variant; terminals are those of the first.
+    fn paths(&self, joint: &Joint, level: Level, states: &[State]) -> Result<Vec<Path>, Failure> {
+        let path = |state: &State| {
+            let under = (&state.conditions, &state.factors);
+            let solved = self.solved(joint, (level, state.variant), under)?;
+            Ok(solved.path().clone())
+        };
+        states.par_iter().map(path).collect()
+    }
 
     /// Makes ready for many forces of one pattern, N, over a range of factors on them.
     fn tabulate(
@@ -117,11 +156,11 @@ pub(in crate::estimate::chain) trait Solved:
     /// Radius of a bolt's contact, m.
     fn contact_radius(&self, bolt: usize) -> f64;
 
-    /// How the faces of the first interface meet at a point; none off the faying faces.
-    fn met_at(&self, point: [f64; 2]) -> Option<Meeting>;
+    /// How the faces of an interface meet at a point; none off the faying faces.
+    fn met_at(&self, at: ([f64; 2], usize)) -> Option<Meeting>;
 
-    /// The rings around a bolt, from its hole outward.
-    fn rings(&self, bolt: usize) -> Vec<RingRow>;
+    /// The rings around a bolt in an interface, from its hole outward.
+    fn rings(&self, bolt: usize, interface: usize) -> Vec<RingRow>;
 
     /// The field as the reader gets it, with what becomes of flatness and the cone beside it.
     fn pressure(&self, flatness: Flatness, cone: Option<ConeBeside>) -> PressureResult;
@@ -133,8 +172,8 @@ pub(in crate::estimate::chain) trait Solved:
     /// Temperatures at a glance.
     fn temperatures(&self) -> Temperatures;
 
-    /// Both faying faces at points in joint coordinates; none off the faces.
-    fn face_points(&self, points: &[[f64; 2]]) -> Vec<Option<FacePoint>>;
+    /// Both faying faces of an interface at points in joint coordinates; none off the faces.
+    fn face_points(&self, points: &[[f64; 2]], interface: usize) -> Vec<Option<FacePoint>>;
 
     /// Temperatures on a line through the stack, per watt above the mean sink surface, warm side
     /// first; none where the line misses it.
@@ -142,4 +181,9 @@ pub(in crate::estimate::chain) trait Solved:
 
     /// Error of the heat that a coarser level does not tell, relative to source to sink.
     fn heat_error(&self) -> f64;
+
+    /// What heated and cooled zones too narrow for the grid may leave out of source to sink, K/W.
+    fn left_out(&self) -> f64 {
+        0.0
+    }
 }

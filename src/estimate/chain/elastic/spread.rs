@@ -1,6 +1,6 @@
 //! How the nominal path moves with a draw: response, model form and flatness over the force.
 
-use rayon::prelude::*;
+use serde_json::{Value, json};
 
 use crate::{
     estimate::{
@@ -10,8 +10,9 @@ use crate::{
             elastic::{
                 ElasticModel,
                 level::GROUND,
-                response::{self, Departure, Gauge, Response},
-                solver::Factors,
+                pattern::Pattern,
+                response::{self, Departure, Gauge, Readings, Response},
+                solver::{Depth, Factors, State},
                 variant::Variant,
             },
             form::with_form,
@@ -25,6 +26,7 @@ use crate::{
 pub(super) struct Spread {
     pub(super) gauge: Gauge,
     pub(super) response: Response,
+    pattern: Pattern,
     bounds: Vec<Bounds>,
 }
 
@@ -40,19 +42,34 @@ struct Bounds {
 }
 
 impl Spread {
+    /// What the forces of bolts, N, add to the readings beyond their sum.
+    pub(super) fn shift(&self, forces: &[f64]) -> Readings {
+        self.pattern.shift(forces)
+    }
+
     /// A path moved from one departure to another, at a place of the model form and of flatness.
     pub(super) fn moved(
         &self,
         path: &Path,
         (from, to): (&Departure, &Departure),
-        [form, flatness]: [f64; 2],
+        (shift, places): (&Readings, [f64; 2]),
     ) -> Path {
-        let moved = self.response.applied(path, (from, to));
-        let bounds = self.bounds_at(to[0]);
-        with_form(
-            moved,
-            between(bounds.form, form) * between(bounds.bent, flatness),
-        )
+        let moved = self.response.shifted(path, (from, to), shift);
+        with_form(moved, self.form(to[0], places))
+    }
+
+    /// Factor on what the joint adds at a force, by the places of the model form and of flatness.
+    pub(super) fn form(&self, force: f64, [form, flatness]: [f64; 2]) -> f64 {
+        let bounds = self.bounds_at(force);
+        between(bounds.form, form) * between(bounds.bent, flatness)
+    }
+
+    /// The bounds as data.
+    pub(super) fn bounds_tables(&self) -> Vec<Value> {
+        let bounds = self.bounds.iter();
+        bounds
+            .map(|each| json!({ "force": each.force, "form": each.form, "bent": each.bent }))
+            .collect()
     }
 
     /// Bounds at a force: straight between those that are known, held beyond.
@@ -89,8 +106,7 @@ impl ElasticModel {
     /// The spread of a case around its nominal conditions, on the ground level, over a range of
     /// force over the nominal.
     ///
-    /// Contacts are solved one after the other from the nominal force outwards, each on all cores;
-    /// then the heat of all states side by side. So no thread decides where a solution starts.
+    /// Contacts are solved from the nominal force outwards, so that each starts from the nearest.
     pub(super) fn spread(
         &self,
         chain: &Chain,
@@ -100,9 +116,11 @@ impl ElasticModel {
         let stated = (GROUND, Variant::Stated);
         let base = self.solved(chain, stated, (nominal, &Factors::NONE))?;
         let gauge = Gauge::of(nominal, &base.met());
+        let joint = chain.joint();
         for force in response::outwards(range) {
-            let departure = response::at_force(force);
-            self.departed(chain, nominal, &departure)?;
+            let conditions = under(nominal, force);
+            self.solver
+                .expect(joint, (GROUND, Variant::Stated), &conditions)?;
         }
         let open = if range[0] <= 0.0 {
             // The gaps of the least force, and no pressure where the faces lie on each other: a
@@ -112,118 +130,163 @@ impl ElasticModel {
                 ..nominal.clone()
             };
             let [least, ..] = response::ends(range);
-            Some(self.departed(chain, &loose, &response::at_force(least))?)
+            let under = under(&loose, least);
+            let solved = self.solved(chain, stated, (&under, &Factors::NONE))?;
+            Some(solved.path().clone())
         } else {
             None
         };
-        let steps = response::steps(chain.joint().plates.len());
+        let steps = response::steps(joint.plates.len());
         let mut response = Response::through(
             (range, steps),
             |departures| {
-                departures
-                    .par_iter()
-                    .map(|departure| self.departed(chain, nominal, departure))
-                    .collect::<Result<Vec<Path>, Failure>>()
+                let states: Vec<State> = departures
+                    .iter()
+                    .map(|departure| departed(nominal, departure))
+                    .collect();
+                self.solver.paths(joint, GROUND, &states)
             },
             open,
         )?;
-        if chain.joint().fasteners.len() > 1 {
-            let error = self.pattern_error(chain, (case, nominal), (&gauge, &response))?;
+        let pattern = self.pattern(chain, nominal)?;
+        if !pattern.is_common() {
+            let probed = (&gauge, &response, &pattern);
+            let error = self.pattern_error(chain, (case, nominal), probed)?;
             response.error = worse(response.error, error);
         }
         let bounds = if let Some(known) = known {
             // Ratios hardly know the temperature of a case; those of the first serve all.
             known.bounds.clone()
         } else {
-            // From the nominal force outwards, so that each starts from the nearest.
-            let mut forces = response::bounded(range);
-            forces.sort_by(|one, other| one.abs().total_cmp(&other.abs()));
-            let mut bounds = forces
-                .into_iter()
-                .map(|force| self.bounds(chain, nominal, force))
-                .collect::<Result<Vec<Bounds>, Failure>>()?;
-            bounds.sort_by(|one, other| one.force.total_cmp(&other.force));
-            bounds
+            self.bounds(chain, nominal, range)?
         };
         Ok(Spread {
             gauge,
             response,
+            pattern,
             bounds,
         })
     }
 
-    /// Form and flatness at one force.
-    fn bounds(&self, chain: &Chain, nominal: &Conditions, force: f64) -> Result<Bounds, Failure> {
-        let conditions = under(nominal, force);
-        let added = |variant: Variant| -> Result<f64, Failure> {
-            let solved = self.solved(chain, (GROUND, variant), (&conditions, &Factors::NONE))?;
-            Ok(solved.path().added_by_joint)
-        };
-        let base = added(Variant::Stated)?;
+    /// Form and flatness over a range of force, from the nominal one outwards.
+    fn bounds(
+        &self,
+        chain: &Chain,
+        nominal: &Conditions,
+        range: [f64; 2],
+    ) -> Result<Vec<Bounds>, Failure> {
         let joint = chain.joint();
-        let mut form = [1.0_f64; 2];
-        for variant in self.solver.forms(joint) {
-            let ratio = added(*variant)? / base;
-            form = [form[0].min(ratio), form[1].max(ratio)];
+        let forms = self.solver.forms(joint);
+        let mut variants = vec![Variant::Stated];
+        variants.extend(forms);
+        if joint.most_loose_flatness() > 0.0 {
+            variants.extend([Variant::Bent(-1.0), Variant::Bent(1.0)]);
         }
-        let loose = joint.most_loose_flatness() > 0.0;
-        let bent = if loose {
-            [
-                added(Variant::Bent(-1.0))? / base,
-                added(Variant::Bent(1.0))? / base,
-            ]
-        } else {
-            [1.0; 2]
+        let mut forces = response::bounded(range);
+        forces.sort_by(|one, other| one.abs().total_cmp(&other.abs()));
+        let state = |force: f64, variant: Variant| State {
+            variant,
+            conditions: under(nominal, force),
+            factors: Factors::NONE,
+            depth: Depth::Solved,
         };
-        Ok(Bounds { force, form, bent })
+        let states: Vec<State> = forces
+            .iter()
+            .flat_map(|force| variants.iter().map(|variant| state(*force, *variant)))
+            .collect();
+        let paths = self.solver.paths(joint, GROUND, &states)?;
+        let at_force = |(force, paths): (&f64, &[Path])| {
+            let ratio = |path: &Path| path.added_by_joint / paths[0].added_by_joint;
+            let ratios: Vec<f64> = paths[1..].iter().map(ratio).collect();
+            let (forms, bent) = ratios.split_at(forms.len());
+            let form = forms.iter().fold([1.0_f64; 2], |[low, high], ratio| {
+                [low.min(*ratio), high.max(*ratio)]
+            });
+            Bounds {
+                force: *force,
+                form,
+                bent: match bent {
+                    [convex, concave] => [*convex, *concave],
+                    _ => [1.0; 2],
+                },
+            }
+        };
+        let parts = paths.chunks(variants.len());
+        let mut bounds: Vec<Bounds> = forces.iter().zip(parts).map(at_force).collect();
+        bounds.sort_by(|one, other| one.force.total_cmp(&other.force));
+        Ok(bounds)
     }
 
-    /// Error of taking the forces of several groups as one: source to sink at the least and at the
-    /// most force of every group, relative.
+    /// How the readings answer to bolts that leave the common pattern, by differences on the ground
+    /// level; contacts are solved one after the other.
+    fn pattern(&self, chain: &Chain, nominal: &Conditions) -> Result<Pattern, Failure> {
+        Pattern::through(&nominal.forces, chain.force_classes(), |forces| {
+            self.under_forces(chain, nominal, forces)
+        })
+    }
+
+    /// Error of the slopes of the pattern: source to sink at the least and at the most force of every
+    /// bolt, and with every other class half way to its least and the rest to its most, relative.
     fn pattern_error(
         &self,
         chain: &Chain,
         (case, nominal): (usize, &Conditions),
-        (gauge, response): (&Gauge, &Response),
+        (gauge, response, pattern): (&Gauge, &Response, &Pattern),
     ) -> Result<f64, Failure> {
-        let stated = (GROUND, Variant::Stated);
-        let base = self.solved(chain, stated, (nominal, &Factors::NONE))?;
-        let mut error = 0.0;
-        for ends in chain.force_ends(case) {
-            let forces = ends
-                .iter()
-                .zip(&nominal.forces)
+        let base = self.under_forces(chain, nominal, nominal.forces.clone())?;
+        let ends = chain.force_ends(case).map(|end| {
+            let floored = end.iter().zip(&nominal.forces);
+            floored
                 .map(|(end, nominal)| end.max(response::LEAST_FORCE * nominal))
-                .collect();
+                .collect::<Vec<f64>>()
+        });
+        let mixed = pattern.alternating(&ends);
+        let [least, most] = ends;
+        let mut error = 0.0;
+        for forces in [least, most, mixed] {
+            let shift = pattern.shift(&forces);
+            let solved = self.under_forces(chain, nominal, forces.clone())?;
             let conditions = Conditions {
                 forces,
                 ..nominal.clone()
             };
-            let solved = self.solved(chain, stated, (&conditions, &Factors::NONE))?;
             let from = gauge.departure(nominal);
             let to = gauge.departure(&conditions);
-            let told = response.applied(base.path(), (&from, &to)).source_to_sink;
-            error = worse(error, (told / solved.path().source_to_sink - 1.0).abs());
+            let told = response.shifted(&base, (&from, &to), &shift).source_to_sink;
+            error = worse(error, (told / solved.source_to_sink - 1.0).abs());
         }
         Ok(error)
     }
 
-    /// The path on the ground level away from nominal.
-    fn departed(
+    /// The path on the ground level at nominal under other forces, N.
+    fn under_forces(
         &self,
         chain: &Chain,
         nominal: &Conditions,
-        departure: &Departure,
+        forces: Vec<f64>,
     ) -> Result<Path, Failure> {
-        let [force, touching, parted, warm, cold, between] = *departure;
-        let factors = Factors {
+        let conditions = Conditions {
+            forces,
+            ..nominal.clone()
+        };
+        let stated = (GROUND, Variant::Stated);
+        let solved = self.solved(chain, stated, (&conditions, &Factors::NONE))?;
+        Ok(solved.path().clone())
+    }
+}
+
+/// The state on the ground level away from nominal.
+fn departed(nominal: &Conditions, (departure, depth): &(Departure, Depth)) -> State {
+    let [force, touching, parted, warm, cold, between] = *departure;
+    State {
+        variant: Variant::Stated,
+        conditions: under(nominal, force),
+        factors: Factors {
             touching: touching.exp(),
             parted: parted.exp(),
             conductivity: [warm.exp(), cold.exp(), between.exp()],
-        };
-        let conditions = under(nominal, force);
-        let solved = self.solved(chain, (GROUND, Variant::Stated), (&conditions, &factors))?;
-        Ok(solved.path().clone())
+        },
+        depth: *depth,
     }
 }
 

@@ -10,7 +10,7 @@ use crate::{
                 heat::Plates,
                 problem::{Order, Task, with_problem},
             },
-            level::{Level, place},
+            level::{Level, coarser, place},
             variant::Variant,
         },
     },
@@ -52,6 +52,14 @@ pub(super) struct Wanted<'a> {
 
 /// A table with its level and the forces at factor 1, N.
 type Tabulated = (Level, Vec<f64>, Arc<Table>);
+
+/// Where the search for a contact begins.
+#[derive(Clone, Debug)]
+enum Start {
+    Near(Arc<Field>),
+    Coarser(Arc<Field>),
+    Bolts,
+}
 
 #[derive(Clone, Debug)]
 struct Solved {
@@ -174,10 +182,11 @@ impl Bank {
             most_bytes: self.most_bytes,
             watch: &self.watch,
         };
-        let near = nearest(known, wanted.forces);
-        let field = with_problem(joint, self.order, &task, |problem| match near {
-            Some(near) => elastic::solve_from(problem, &near.field),
-            None => elastic::solve(problem),
+        let start = self.start(joint, wanted, known)?;
+        let field = with_problem(joint, self.order, &task, |problem| match &start {
+            Start::Near(field) => elastic::solve_from(problem, field),
+            Start::Coarser(field) => elastic::solve_from_coarser(problem, field),
+            Start::Bolts => elastic::solve(problem),
         });
         let field = Arc::new(field.map_err(Failure::Contact)?);
         let health = &field.health;
@@ -194,6 +203,38 @@ impl Bank {
             field: field.clone(),
         });
         Ok(field)
+    }
+
+    /// The nearest known field of the variant, else that of the joint as stated, else of the level
+    /// below, which is solved for it: the error of a level asks for it anyway.
+    fn start(&self, joint: &Joint, wanted: &Wanted, known: &[Solved]) -> Result<Start, Failure> {
+        if let Some(near) = nearest(known, wanted.forces) {
+            return Ok(Start::Near(near.field.clone()));
+        }
+        // Rigid heads have unknowns of their own and rock into their places.
+        if !matches!(wanted.variant, Variant::Stated | Variant::OtherHeads) {
+            let stated: Vec<Solved> = self
+                .solved()
+                .iter()
+                .filter(|each| each.level == wanted.level && each.variant == Variant::Stated)
+                .cloned()
+                .collect();
+            if let Some(near) = nearest(&stated, wanted.forces) {
+                return Ok(Start::Near(near.field.clone()));
+            }
+        }
+        let below = coarser(wanted.level);
+        if below == wanted.level || wanted.variant != Variant::Stated {
+            return Ok(Start::Bolts);
+        }
+        let field = self.field(
+            joint,
+            &Wanted {
+                level: below,
+                ..*wanted
+            },
+        );
+        Ok(Start::Coarser(field?))
     }
 
     /// The plates as heat meets them on the grid of a field.

@@ -14,7 +14,9 @@ use crate::{
     pressure::elastic::{Field, Mesh},
     resistance::{
         self, Path,
-        columns::{Body, Conduction, Conductivity, Heat, Meeting, Perfect, Slab, Stack, Terminals},
+        columns::{
+            Body, Conduction, Conductivity, Heat, Meeting, Perfect, Slab, Stack, Terminals, nodal,
+        },
     },
 };
 
@@ -24,8 +26,8 @@ const SAME: f64 = 1e-9;
 /// The plates as heat meets them.
 #[derive(Debug)]
 pub(super) struct Plates {
-    stack: Arc<Stack>,
-    terminals: Ends,
+    pub(super) stack: Arc<Stack>,
+    pub(super) terminals: Ends,
     /// Conductivity through every plate over that in its plane.
     through: Vec<f64>,
     /// Perfect contact met so far, with the sink temperature where the back radiates, K.
@@ -91,30 +93,33 @@ impl Plates {
         in_plane: &[f64],
         conditions: &Conditions,
     ) -> Result<(Heat, Path), resistance::Failure> {
-        let conductivity: Vec<Conductivity> = in_plane
-            .iter()
-            .zip(&self.through)
-            .map(|(k, ratio)| Conductivity::layered(*k, ratio * k))
-            .collect();
+        let conductivity = self.conductivity(in_plane);
         let terminals = self.terminals.under(conditions);
-        // Where nothing radiates one perfect contact serves all temperatures.
-        let temperature = if self.terminals.radiates() {
-            conditions.temperature
-        } else {
-            0.0
-        };
         // Each load starts afresh, so that the order of the threads moves no digit.
         let mut conduction = Conduction::new(&self.stack, &terminals, &conductivity)?;
         let (heat, perfect) = rayon::join(
             || conduction.solve(conductances),
-            || self.perfect(temperature, (&terminals, &conductivity)),
+            || self.perfect(conditions, (&terminals, &conductivity)),
         );
         let (heat, perfect) = (heat?, perfect?);
-        let mut path = heat.path(&perfect);
-        if conductances.iter().any(|parts| parts.len() > 1) {
+        let floor = if has_feet(conductances) {
+            Some(conduction.solve(&bridged(conductances))?.source_to_sink)
+        } else {
+            None
+        };
+        let path = self.path(&heat, (&perfect, floor))?;
+        Ok((heat, path))
+    }
+
+    /// The path of a solution beside perfect contact, and beside perfect feet where there are some.
+    pub(super) fn path(
+        &self,
+        heat: &Heat,
+        (perfect, floor): (&Perfect, Option<f64>),
+    ) -> Result<Path, resistance::Failure> {
+        let mut path = heat.path(perfect);
+        if let Some(floor) = floor {
             // What crosses beside feet is not the joint's to improve: it stays under perfect feet.
-            let touching = bridged(conductances);
-            let floor = conduction.solve(&touching)?.source_to_sink;
             path.perfect_contact = floor;
             path.added_by_joint = path.source_to_sink - floor;
             path.resistance_lower = floor.max(heat.one_dimensional);
@@ -124,14 +129,27 @@ impl Plates {
             path.coolant_drop = None;
         }
         path.checked("heat through the columns")?;
-        Ok((heat, path))
+        Ok(path)
     }
 
-    fn perfect(
+    pub(super) fn conductivity(&self, in_plane: &[f64]) -> Vec<Conductivity> {
+        let plates = in_plane.iter().zip(&self.through);
+        plates
+            .map(|(k, ratio)| Conductivity::layered(*k, ratio * k))
+            .collect()
+    }
+
+    pub(super) fn perfect(
         &self,
-        temperature: f64,
+        conditions: &Conditions,
         (terminals, conductivity): (&Terminals, &[Conductivity]),
     ) -> Result<Perfect, resistance::Failure> {
+        // Where nothing radiates one perfect contact serves all temperatures.
+        let temperature = if self.terminals.radiates() {
+            conditions.temperature
+        } else {
+            0.0
+        };
         let known = || self.perfect.lock().unwrap_or_else(PoisonError::into_inner);
         let serves = |(at, perfect): &&(f64, Perfect)| {
             (at - temperature).abs() < SAME && perfect.serves(terminals, conductivity)
@@ -157,15 +175,18 @@ pub(super) fn conductances(
         .enumerate()
         .map(|(index, face)| {
             let laws = &conditions.faces[order.plate(index, field.faces.len())];
-            let highest = face.pressure.iter().copied().fold(0.0, f64::max);
+            let contact = &field.mesh.faces[index].contact;
+            let pressures = nodal(&field.mesh.plan, contact, &face.pressure);
+            let highest = pressures.iter().copied().fold(0.0, f64::max);
             let touching = laws.over_many_points(highest);
             let parted = |gap: f64| factors.parted * laws.local.parted(gap);
-            let columns = face.pressure.iter().zip(&face.gap).zip(&face.weight);
+            let columns = pressures.iter().zip(&face.gap).zip(&face.weight);
             let own = columns
-                .map(|((pressure, gap), weight)| {
+                .enumerate()
+                .map(|(column, ((pressure, gap), weight))| {
                     if *weight <= 0.0 {
                         0.0
-                    } else if *pressure > 0.0 {
+                    } else if face.pressure[column] > 0.0 {
                         factors.touching * touching(*pressure)
                     } else {
                         parted(*gap)
@@ -189,8 +210,13 @@ pub(super) fn conductances(
     found
 }
 
+/// Whether faces meet beside feet anywhere.
+pub(super) fn has_feet(conductances: &Conductances) -> bool {
+    conductances.iter().any(|parts| parts.len() > 1)
+}
+
 /// The same with faces that touch as good as perfectly; what lies beside feet stays.
-fn bridged(conductances: &Conductances) -> Conductances {
+pub(super) fn bridged(conductances: &Conductances) -> Conductances {
     /// Far beyond what any plate passes on; what it leaves is below 1e-4 of a millimetre of metal.
     const AS_GOOD_AS_PERFECT: f64 = 1e9;
     let mut found = conductances.clone();

@@ -142,9 +142,13 @@ impl Solved for OnColumns {
         }
     }
 
-    /// None: the level moves the grid of contact and heat alike.
+    /// That of narrow zones alone: the level moves the grid of contact and heat alike.
     fn heat_error(&self) -> f64 {
-        0.0
+        self.left_out / self.path.source_to_sink
+    }
+
+    fn left_out(&self) -> f64 {
+        self.left_out
     }
 
     fn pressed_edge(&self, joint: &Joint) -> Option<PressedEdge> {
@@ -160,14 +164,14 @@ impl Solved for OnColumns {
             })
     }
 
-    fn met_at(&self, point: [f64; 2]) -> Option<Meeting> {
+    fn met_at(&self, (point, interface): ([f64; 2], usize)) -> Option<Meeting> {
         let field = &self.field;
-        let own = self.own(0);
+        let own = self.own(interface);
         let shape = &field.mesh.faces[own];
         let plan = &field.mesh.plan;
         let gap = field.face(own).gap_at(point)?;
         let pressure = if shape.contact.holds(plan, point) {
-            let shown = self.shown.get_or_init(|| field.face(own).shown_pressure());
+            let shown = self.shown[own].get_or_init(|| field.face(own).shown_pressure());
             let around = plan.around(point)?;
             around
                 .iter()
@@ -205,8 +209,9 @@ impl Solved for OnColumns {
         temperatures::at_a_glance(&self.heat)
     }
 
-    fn face_points(&self, points: &[[f64; 2]]) -> Vec<Option<FacePoint>> {
-        temperatures::face_points((&self.field, &self.heat), points)
+    fn face_points(&self, points: &[[f64; 2]], interface: usize) -> Vec<Option<FacePoint>> {
+        let shape = &self.field.mesh.faces[self.own(interface)];
+        temperatures::face_points((shape, &self.heat), points, interface)
     }
 
     fn section(&self, across: Across) -> Option<Vec<Section>> {
@@ -214,7 +219,7 @@ impl Solved for OnColumns {
     }
 
     /// Every sample of the faces counts to its nearest bolt.
-    fn rings(&self, bolt: usize) -> Vec<RingRow> {
+    fn rings(&self, bolt: usize, interface: usize) -> Vec<RingRow> {
         let field = &self.field;
         let place = &field.bolts[bolt];
         let edges = edges(
@@ -223,7 +228,7 @@ impl Solved for OnColumns {
             far_end(field, bolt),
         );
         let mut sums = vec![Sum::default(); edges.len() - 1];
-        for (region, values) in parts((field, self.own(0)), &self.first) {
+        for (region, values) in parts((field, self.own(interface)), &self.faces[interface]) {
             gather(field, region, |place, area, around| {
                 let (owner, distance) = nearest(field, place);
                 if owner != bolt {
@@ -252,10 +257,10 @@ struct Values<'a> {
     conductance: &'a [f64],
 }
 
-/// The touching part of the first interface, and what lies beside feet.
+/// The touching part of an interface, and what lies beside feet.
 fn parts<'a>(
     (field, own): (&'a Field, usize),
-    first: &'a [Vec<f64>],
+    faces: &'a [Vec<f64>],
 ) -> Vec<(&'a Region, Values<'a>)> {
     let shape = &field.mesh.faces[own];
     let face: &FaceField = &field.faces[own];
@@ -263,10 +268,10 @@ fn parts<'a>(
         &shape.contact,
         Values {
             pressure: Some(&face.pressure),
-            conductance: &first[0],
+            conductance: &faces[0],
         },
     )];
-    if let Some(beside) = first.get(1) {
+    if let Some(beside) = faces.get(1) {
         found.push((
             &shape.beside,
             Values {

@@ -3,7 +3,7 @@
 use crate::{
     estimate::{FacePoint, Temperatures},
     numerics::columns::Region,
-    pressure::elastic::Field,
+    pressure::elastic::MeshFace,
     resistance::columns::{Across, Heat, Meeting, Section},
 };
 
@@ -31,23 +31,28 @@ struct Part<'a> {
     solid: [Vec<f64>; 2],
 }
 
-/// The first interface at points; beside feet the plates themselves.
+/// An interface at points; beside feet the plates themselves.
 pub(super) fn face_points(
-    (field, heat): (&Field, &Heat),
+    (shape, heat): (&MeshFace, &Heat),
     points: &[[f64; 2]],
+    interface: usize,
 ) -> Vec<Option<FacePoint>> {
     let stack = heat.stack();
     let plan = stack.plan();
-    let shape = &field.mesh.faces[0];
-    let parts: Vec<Part> = stack.faces()[0]
+    // The bodies that meet there, warm one first.
+    let bodies = [interface, interface + 1];
+    let parts: Vec<Part> = stack.faces()[interface]
         .iter()
-        .zip(&heat.flux[0])
+        .zip(&heat.flux[interface])
         .zip([&shape.contact, &shape.beside])
         .map(|((meeting, flux), region)| Part {
             region,
             meeting,
             flux,
-            solid: [stack.solid(0, meeting.upper), stack.solid(1, meeting.lower)],
+            solid: [
+                stack.solid(bodies[0], meeting.upper),
+                stack.solid(bodies[1], meeting.lower),
+            ],
         })
         .collect();
     let (mut crossing, mut area) = (0.0, 0.0);
@@ -58,7 +63,7 @@ pub(super) fn face_points(
         }
     }
     let mean = crossing / area;
-    let nodes = [0, 1].map(|body| stack.bodies()[body].nodes());
+    let nodes = bodies.map(|body| stack.bodies()[body].nodes());
     points
         .iter()
         .map(|point| {
@@ -73,9 +78,9 @@ pub(super) fn face_points(
                 }
                 (sums[1] > 0.0).then(|| sums[0] / sums[1])
             };
-            let face = |body: usize, node: usize| {
-                over(&|column| part.solid[body][column] >= MOSTLY, &|column| {
-                    heat.temperatures[body][column * nodes[body] + node] - heat.sink_mean
+            let face = |side: usize, node: usize| {
+                over(&|column| part.solid[side][column] >= MOSTLY, &|column| {
+                    heat.temperatures[bodies[side]][column * nodes[side] + node] - heat.sink_mean
                 })
             };
             let weights = &part.meeting.weights;

@@ -50,7 +50,7 @@ impl Solved for InRound {
         self.contact.contact_radius
     }
 
-    fn met_at(&self, [x, y]: [f64; 2]) -> Option<Meeting> {
+    fn met_at(&self, ([x, y], _): ([f64; 2], usize)) -> Option<Meeting> {
         let radius = (x - self.shape.at[0]).hypot(y - self.shape.at[1]);
         let on_the_faces = self.shape.hole_radius <= radius && radius <= self.shape.rim_radius;
         on_the_faces.then(|| Meeting {
@@ -59,7 +59,7 @@ impl Solved for InRound {
         })
     }
 
-    fn rings(&self, _: usize) -> Vec<RingRow> {
+    fn rings(&self, _: usize, _: usize) -> Vec<RingRow> {
         self.rings.clone()
     }
 
@@ -67,7 +67,7 @@ impl Solved for InRound {
         temperatures::at_a_glance(&self.heat, &self.shape)
     }
 
-    fn face_points(&self, points: &[[f64; 2]]) -> Vec<Option<FacePoint>> {
+    fn face_points(&self, points: &[[f64; 2]], _: usize) -> Vec<Option<FacePoint>> {
         temperatures::face_points((&self.heat, &self.flux), &self.shape, points)
     }
 

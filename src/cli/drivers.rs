@@ -1,0 +1,149 @@
+//! `drivers`: which inputs the band comes from, and what to do about them.
+
+use crate::{
+    cli::{
+        chain::{self, Task},
+        check,
+        console::{Console, Layout, Outcome, Trouble},
+        draws,
+        field::{self, Field},
+        output::{self, Existing, Target},
+    },
+    estimate::Options,
+    figures::Drawing,
+    report,
+    uncertainty::{self, FEWEST_BASES, RankingOptions},
+};
+use clap::{Args, ValueEnum};
+use std::path::PathBuf;
+
+const EXAMPLES: &str = "\
+Examples:
+  ringsum drivers joint.toml
+  ringsum drivers joint.toml --of rise --draw drivers.svg";
+
+/// Which inputs the band comes from, ranked, with what knowing each would buy
+///
+/// Shares of the variance with their 95 % interval, the answer when each input alone goes from its
+/// 5 % to its 95 %, and the band that would be left if it were known.
+#[derive(Debug, Args)]
+#[command(after_help = EXAMPLES)]
+pub struct Drivers {
+    /// Joint file; - reads standard input
+    file: PathBuf,
+    /// The answer: source to sink unless told otherwise
+    #[arg(
+        long,
+        value_enum,
+        value_name = "source_to_sink|contact|added|node_to_node|rise",
+        default_value = "source_to_sink",
+        hide_possible_values = true
+    )]
+    of: Of,
+    /// Draws of every band, and base points of the shares
+    #[arg(long, value_name = "N", default_value = "16384", value_parser = bases)]
+    draws: u32,
+    /// Seed of the draws
+    #[arg(long, value_name = "N", default_value_t = 1)]
+    seed: u64,
+    #[command(flatten)]
+    field: Field,
+    /// Override a field: --set 'plate.box.thickness="6 mm"'
+    #[arg(long = "set", value_name = "KEY=VALUE")]
+    sets: Vec<String>,
+    /// Print JSON, in SI
+    #[arg(long)]
+    json: bool,
+    /// Draw the bars to a file that ends in .svg or .png
+    #[arg(long, value_name = "FIGURE")]
+    draw: Option<PathBuf>,
+    /// Replace the figure if it exists
+    #[arg(long)]
+    force: bool,
+}
+
+/// The answer that is looked into.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, ValueEnum)]
+#[value(rename_all = "snake_case")]
+enum Of {
+    /// Heated zone to sink surface
+    SourceToSink,
+    /// Faying faces alone
+    Contact,
+    /// What the joint adds
+    Added,
+    /// Plate to plate
+    NodeToNode,
+    /// Temperature of the source above the sink
+    Rise,
+}
+
+/// More base points than this take minutes and tell nothing new.
+const MOST: u32 = 1_000_000;
+
+/// A number of base points that tells a confidence.
+fn bases(text: &str) -> Result<u32, String> {
+    match draws::number(text) {
+        Some(count) if (FEWEST_BASES..=MOST).contains(&count) => Ok(count),
+        _ => Err(format!(
+            "draws are from {FEWEST_BASES} to {MOST}, such as 16384 or 1e5; fewer tell no confidence"
+        )),
+    }
+}
+
+impl Of {
+    fn target(self) -> uncertainty::Target {
+        match self {
+            Self::SourceToSink => uncertainty::Target::SourceToSink,
+            Self::Contact => uncertainty::Target::Contact,
+            Self::Added => uncertainty::Target::AddedByJoint,
+            Self::NodeToNode => uncertainty::Target::NodeToNode,
+            Self::Rise => uncertainty::Target::Rise,
+        }
+    }
+}
+
+impl Drivers {
+    /// Ranks the inputs; checks the target of the figure before computing.
+    pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
+        let figure = match &self.draw {
+            Some(path) => Some((
+                output::format(path)?,
+                Target::new(path, Existing::from_force(self.force))?,
+            )),
+            None => None,
+        };
+        let (_, joint) =
+            check::read(&self.file, &self.sets, console).map_err(|refused| refused.trouble())?;
+        if self.of == Of::Rise && joint.service.heat.is_none() {
+            return Err(Trouble::usage(
+                "--of rise needs the heat, and this joint states none",
+                "state [service] heat = \"20 W\", or take --of source_to_sink",
+            ));
+        }
+        let options = RankingOptions {
+            target: self.of.target(),
+            draws: Options {
+                draws: self.draws,
+                seed: self.seed,
+            },
+        };
+        let task = Task {
+            joint: &joint,
+            choice: self.field.choice()?,
+            watch: field::watch(),
+        };
+        let found = chain::ranking(&task, &options)?;
+        if let Some((format, target)) = figure {
+            let drawing = Drawing::Tornado(Box::new(found.clone()));
+            target.write(&chain::render(&drawing, format)?)?;
+            console.message(&format!("wrote {}\n", target.path.display()));
+        }
+        if self.json {
+            console.json(&report::drivers::json(&found), Layout::Indented)?;
+        } else {
+            console.result(&report::drivers::text(&found))?;
+        }
+        Ok(Outcome::Done)
+    }
+}

@@ -1,0 +1,196 @@
+//! Many draws of one case: the chain with everything worked out that no draw changes.
+
+use serde_json::{Value, json};
+
+use crate::estimate::{
+    Chain, Failure, Realisation,
+    chain::{
+        Model,
+        conditions::{Conditions, Outlook},
+        elastic::ElasticPlan,
+    },
+};
+
+/// What one draw leaves behind, K/W.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Drawn {
+    /// Faying faces alone.
+    pub contact: f64,
+    /// Mean of the first plate to mean of the last.
+    pub node_to_node: f64,
+    /// What the joint adds to perfect contact.
+    pub added_by_joint: f64,
+    /// Mean of the heated zone to mean of the sink surface.
+    pub source_to_sink: f64,
+    /// Source to sink when the faces meet perfectly.
+    pub perfect_contact: f64,
+    /// Highest temperature of the first plate.
+    pub hottest: f64,
+    /// Mean drop across the faying faces.
+    pub interface_drop: f64,
+}
+
+/// One case of a chain, compiled for its draws.
+///
+/// ```text
+/// torque, losses → force;  faces, gas, filler → conductance at the gauge's pressure and gap;
+/// both and the conductivities → surfaces of the response → resistances
+/// ```
+///
+/// The laws are evaluated as they stand; only the surfaces behind them are approximate, and
+/// [`Chain::draw_error`] tells how much. On the cone the networks are solved for every draw. It gives
+/// what [`Chain::state`] gives, within rounding.
+/// Checked: `tests/validation_draws.rs`.
+#[derive(Clone, Debug)]
+pub struct DrawPlan<'a> {
+    chain: &'a Chain<'a>,
+    case: usize,
+    outlook: Outlook<'a>,
+    field: Field<'a>,
+}
+
+/// What stands for the field.
+#[derive(Clone, Debug)]
+enum Field<'a> {
+    Cone,
+    Elastic(Box<ElasticPlan<'a>>),
+}
+
+/// Room in which draws are worked out one after the other.
+#[derive(Clone, Debug)]
+pub struct Workspace(Conditions);
+
+impl Chain<'_> {
+    /// Source to sink of a draw as it is read from the surfaces of a solved field, and as solved for
+    /// these very inputs on the level of the surfaces, K/W; form and flatness, which stand on bounds,
+    /// are left at nominal. None on the cone, which solves every draw, and where hardly any force is
+    /// left.
+    pub fn draw_beside(&self, case: usize, at: &Realisation) -> Result<Option<[f64; 2]>, Failure> {
+        match &self.model {
+            Model::Cone(_) => Ok(None),
+            Model::Elastic(model) => model.beside(self, case, at),
+        }
+    }
+
+    /// The answers of a case at nominal.
+    pub(crate) fn nominal_answers(&self, case: usize) -> Result<Drawn, Failure> {
+        let state = self.state(case, &Realisation::default())?;
+        Ok(Drawn::of(&state.path))
+    }
+
+    /// The plan of the draws of a case; on a solved field this works out their surfaces, once.
+    pub fn draw_plan(&self, case: usize) -> Result<DrawPlan<'_>, Failure> {
+        let (outlook, field) = match &self.model {
+            Model::Cone(_) => (Outlook::of(self, case, &self.cold(case))?, Field::Cone),
+            Model::Elastic(model) => {
+                let (outlook, plan) = model.plan(self, case)?;
+                (outlook, Field::Elastic(Box::new(plan)))
+            }
+        };
+        Ok(DrawPlan {
+            chain: self,
+            case,
+            outlook,
+            field,
+        })
+    }
+}
+
+impl DrawPlan<'_> {
+    /// Room for draws.
+    pub fn workspace(&self) -> Workspace {
+        Workspace(self.outlook.at(&Realisation::default()))
+    }
+
+    /// The resistances at a realisation.
+    pub fn drawn(&self, at: &Realisation, workspace: &mut Workspace) -> Result<Drawn, Failure> {
+        let conditions = &mut workspace.0;
+        self.outlook.put(at, conditions);
+        let found = match (&self.field, &self.chain.model) {
+            (Field::Elastic(plan), _) => plan.drawn(conditions, at),
+            (Field::Cone, Model::Cone(model)) => {
+                Drawn::of(&model.path(self.case, conditions, at)).with_error(at.numerical)
+            }
+            (Field::Cone, Model::Elastic(_)) => unreachable!("the plan is of this chain"),
+        };
+        if found.is_sound() {
+            return Ok(found);
+        }
+        // The chain itself knows what may be infinite, and names what may not.
+        self.chain
+            .state(self.case, at)
+            .map(|state| Drawn::of(&state.path))
+    }
+}
+
+impl DrawPlan<'_> {
+    /// What a draw is read from on a solved field, as data: for programs that evaluate the same
+    /// draws; nothing for the cone.
+    pub fn tables(&self) -> Value {
+        match &self.field {
+            Field::Cone => Value::Null,
+            Field::Elastic(plan) => json!({
+                "meets": self.outlook.tables(),
+                "field": plan.tables(),
+            }),
+        }
+    }
+}
+
+impl Drawn {
+    /// All, in the order of the fields.
+    pub fn all(&self) -> [f64; 7] {
+        [
+            self.contact,
+            self.node_to_node,
+            self.added_by_joint,
+            self.source_to_sink,
+            self.perfect_contact,
+            self.hottest,
+            self.interface_drop,
+        ]
+    }
+
+    /// Whether every resistance is a number that can be: means of plates may stand either way round.
+    fn is_sound(&self) -> bool {
+        let signed = [
+            self.node_to_node,
+            self.added_by_joint,
+            self.hottest,
+            self.interface_drop,
+        ];
+        let unsigned = [self.contact, self.source_to_sink, self.perfect_contact];
+        signed.iter().all(|value| value.is_finite())
+            && unsigned
+                .iter()
+                .all(|value| value.is_finite() && *value > 0.0)
+    }
+
+    /// Moved by what the grid may err: all of it alike, but for the ring sum.
+    pub(super) fn with_error(self, numerical: f64) -> Self {
+        let factor = 1.0 + numerical;
+        Self {
+            contact: self.contact,
+            node_to_node: self.node_to_node * factor,
+            added_by_joint: self.added_by_joint * factor,
+            source_to_sink: self.source_to_sink * factor,
+            perfect_contact: self.perfect_contact * factor,
+            hottest: self.hottest * factor,
+            interface_drop: self.interface_drop * factor,
+        }
+    }
+
+    /// With the model form applied to what the joint adds.
+    pub(super) fn with_form(self, form: f64) -> Self {
+        let added = self.added_by_joint * form;
+        let moved = added - self.added_by_joint;
+        Self {
+            added_by_joint: added,
+            source_to_sink: self.source_to_sink + moved,
+            hottest: self.hottest + moved,
+            interface_drop: self.interface_drop * form,
+            node_to_node: self.node_to_node + moved,
+            ..self
+        }
+    }
+}

@@ -1,0 +1,189 @@
+//! What drives a band, for the terminal and as JSON.
+
+use std::fmt::Write;
+
+use serde_json::{Value, json};
+
+use crate::{
+    report::{
+        number::{cut, four, optional, percent, plain, wrapped},
+        table::{Side, aligned},
+        text::{WIDTH, wrapped_after},
+    },
+    uncertainty::{Index, Ranking, Scale, Share},
+};
+
+/// Widest name in the table, characters.
+const NAME: usize = 34;
+/// Share of no input alone above which few extreme draws are behind the shares.
+const MUCH: f64 = 0.5;
+/// Total share below which an input is not worth a remedy.
+const WORTH_A_LINE: f64 = 0.01;
+
+/// The ranking as a table, with what to do about the inputs that matter.
+pub fn text(ranking: &Ranking) -> String {
+    let (target, unit) = (ranking.target.name(), ranking.target.unit());
+    let rows: Vec<Vec<String>> = ranking
+        .inputs
+        .iter()
+        .map(|input| {
+            let [low, high] = [
+                input.alone[0].min(input.alone[1]),
+                input.alone[0].max(input.alone[1]),
+            ];
+            vec![
+                cut(input.input, NAME),
+                share(&input.index.first),
+                share(&input.index.total),
+                four(low),
+                four(high),
+                optional(input.known.low),
+                optional(input.known.high),
+                percent_less(input.narrowing(&ranking.band)),
+            ]
+        })
+        .collect();
+    let heading = |name: &str| format!("{name} {unit}");
+    let (alone, known) = (heading("alone"), heading("known"));
+    let right = Side::Right;
+    let table = aligned(
+        &[
+            ("input", Side::Left),
+            ("share %\nof its own", right),
+            ("share %\nin total", right),
+            (&format!("{alone}\nlow"), right),
+            ("\nhigh", right),
+            (&format!("{known}\nlow"), right),
+            ("\nhigh", right),
+            ("band\nless", right),
+        ],
+        &rows,
+    );
+    let mut text = format!("{}\n", plain(&ranking.title));
+    let _ = writeln!(
+        text,
+        "what drives {target}, {} case; field {}, {}\n\
+         {} {unit}, low {} to high {}\n\n{table}",
+        ranking.case,
+        ranking.field,
+        ranking.resolution,
+        four(ranking.band.nominal),
+        optional(ranking.band.low),
+        optional(ranking.band.high),
+    );
+    let scale = match ranking.scale {
+        Scale::Logarithm => format!("of the variance of the logarithm of {target}"),
+        Scale::Itself => format!("of the variance of {target}"),
+    };
+    for line in [
+        format!("share {scale}, ± its 95 % interval; of its own: what goes if this input alone is known; in total: what is left if all others are"),
+        format!("{} belongs to no input alone", percent(ranking.interaction)),
+        "alone: this input at its 5 % and 95 %, all others nominal; known: the band if this input were known to be nominal".to_owned(),
+        if ranking.interaction > MUCH {
+            "few extreme draws hold most of the variance: go by the last columns, which look at the band from 5 % to 95 %".to_owned()
+        } else {
+            String::new()
+        },
+        draws(ranking),
+    ] {
+        if line.is_empty() {
+            continue;
+        }
+        let _ = writeln!(text, "{}", wrapped(&line, WIDTH, 2));
+    }
+    text.push_str(&remedies(ranking));
+    text
+}
+
+fn draws(ranking: &Ranking) -> String {
+    let mut line = format!(
+        "{} draws for every band and as many base points for the shares, seed {}",
+        ranking.draws, ranking.seed
+    );
+    if let Some(error) = ranking.draw_error {
+        let _ = write!(
+            line,
+            "; read from surfaces through solved states, off by {} where they were tried",
+            percent(error)
+        );
+    }
+    line
+}
+
+fn remedies(ranking: &Ranking) -> String {
+    let told: Vec<_> = ranking
+        .inputs
+        .iter()
+        .filter(|input| input.index.total.value >= WORTH_A_LINE)
+        .take(6)
+        .collect();
+    if told.is_empty() {
+        return String::new();
+    }
+    let widest = told.iter().map(|input| input.input.chars().count()).max();
+    let name = widest.unwrap_or(0);
+    let mut text = "\nwhat to do about it\n".to_owned();
+    for input in told {
+        let line = format!("  {:<name$}  {}", input.input, input.remedy);
+        let _ = writeln!(text, "{}", wrapped_after(&line, name + 4));
+    }
+    text
+}
+
+/// A share in percent with its interval.
+fn share(share: &Share) -> String {
+    if share.value.is_finite() {
+        // No minus before a zero.
+        let tenth = |value: f64| (1000.0 * value).round() / 10.0 + 0.0;
+        format!("{:.1} ± {:.1}", tenth(share.value), tenth(share.confidence))
+    } else {
+        "–".to_owned()
+    }
+}
+
+fn percent_less(share: f64) -> String {
+    if share.is_finite() {
+        // No minus before a zero.
+        format!("{:.0} %", (100.0 * share).round() + 0.0)
+    } else {
+        "–".to_owned()
+    }
+}
+
+/// The ranking in SI: shares of 1, the answer in K/W, or in K for the rise.
+pub fn json(ranking: &Ranking) -> Value {
+    let share = |share: &Share| json!({ "value": share.value, "confidence": share.confidence });
+    let index = |index: &Index| (share(&index.first), share(&index.total));
+    json!({
+        "version": env!("CARGO_PKG_VERSION"),
+        "title": ranking.title,
+        "case": ranking.case,
+        "field": ranking.field,
+        "resolution": ranking.resolution,
+        "of": ranking.target.name(),
+        "unit": ranking.target.unit(),
+        "draws": ranking.draws,
+        "seed": ranking.seed,
+        "draw_error": ranking.draw_error,
+        "scale": match ranking.scale {
+            Scale::Logarithm => "logarithm",
+            Scale::Itself => "itself",
+        },
+        "low": ranking.band.low,
+        "nominal": ranking.band.nominal,
+        "high": ranking.band.high,
+        "interaction": ranking.interaction,
+        "inputs": ranking.inputs.iter().map(|input| {
+            let (first, total) = index(&input.index);
+            json!({
+                "input": input.input,
+                "first": first,
+                "total": total,
+                "alone": input.alone,
+                "known": { "low": input.known.low, "high": input.known.high },
+                "narrowing": input.narrowing(&ranking.band),
+                "remedy": input.remedy,
+            })
+        }).collect::<Vec<Value>>(),
+    })
+}

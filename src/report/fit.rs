@@ -1,0 +1,421 @@
+//! Fits of own measurements, as text and as JSON.
+
+use crate::{
+    fit::{
+        Abscissa, Branch, Hysteresis, Ordinate, PowerLaw, Series, Shape,
+        profile::Verdict,
+        unknown::{Answer, Question, moved},
+    },
+    report::{
+        json,
+        number::{four, plain, wrapped},
+        table::{Side, aligned},
+        text::{self, Detail},
+    },
+    units::{Quantity, show},
+};
+use serde_json::{Value, json};
+use std::fmt::Write;
+
+/// Rows of the table of a law.
+const ROWS: usize = 5;
+
+/// Width of the lines, characters.
+const WIDTH: usize = 96;
+
+/// The unit in which a quantity stands in tables and figures, and its size in SI.
+pub fn unit(quantity: Quantity) -> (&'static str, f64) {
+    match quantity {
+        Quantity::Pressure => ("MPa", 1e6),
+        Quantity::Force => ("kN", 1e3),
+        other => (other.unit(), 1.0),
+    }
+}
+
+/// What was fitted, as people say it.
+pub fn fitted(ordinate: Ordinate) -> &'static str {
+    if ordinate.is_per_area() { "h" } else { "G" }
+}
+
+/// What was fitted, in words.
+pub fn measured(ordinate: Ordinate) -> &'static str {
+    if ordinate.is_per_area() {
+        "contact conductance"
+    } else {
+        "conductance"
+    }
+}
+
+/// The sign of what was varied.
+fn sign(abscissa: Abscissa) -> &'static str {
+    match abscissa {
+        Abscissa::Pressure => "p",
+        Abscissa::Force => "F",
+        Abscissa::Torque => "T",
+    }
+}
+
+/// A fitted series for the terminal; the block is printed apart.
+pub fn series(series: &Series, name: &str) -> String {
+    let mut text = format!(
+        "{}: {} against {}\n",
+        plain(name),
+        measured(series.ordinate),
+        series.abscissa.name()
+    );
+    for branch in &series.branches {
+        text.push('\n');
+        text.push_str(&self::branch(series, branch));
+    }
+    if let Some(found) = series.hysteresis {
+        let _ = writeln!(text, "\n{}", hysteresis(&found, series.abscissa));
+    }
+    let told = text::cautions(&series.cautions, Detail::Full);
+    if !told.is_empty() {
+        let _ = write!(text, "\n{told}");
+    }
+    text
+}
+
+fn hysteresis(found: &Hysteresis, abscissa: Abscissa) -> String {
+    let between = found.interval.map_or_else(String::new, |[low, high]| {
+        format!(" ({} to {}, 90 %)", four(low), four(high))
+    });
+    format!(
+        "unloading over loading at {}: {}{between}",
+        show(found.at, abscissa.quantity()),
+        four(found.ratio)
+    )
+}
+
+fn branch(series: &Series, branch: &Branch) -> String {
+    let [low, high] = branch.range();
+    let x = |value: f64| show(value, series.abscissa.quantity());
+    let named = branch.direction.map_or("all", |way| way.name());
+    let mut text = format!(
+        "{named}: {} readings from {} to {}\n",
+        branch.readings.len(),
+        x(low),
+        x(high)
+    );
+    match &branch.shape {
+        Shape::Law(law) => text.push_str(&self::law(series, law)),
+        Shape::Table(table) => {
+            let (x_unit, x_size) = unit(series.abscissa.quantity());
+            let y_unit = series.ordinate.fitted().unit();
+            let rows: Vec<Vec<String>> = table
+                .rows
+                .iter()
+                .map(|(x, y)| vec![four(x / x_size), four(*y)])
+                .collect();
+            text.push_str(&aligned(
+                &[
+                    (
+                        &format!("{}\n{x_unit}", series.abscissa.name()),
+                        Side::Right,
+                    ),
+                    (&format!("table\n{y_unit}"), Side::Right),
+                ],
+                &rows,
+            ));
+            let _ = writeln!(
+                text,
+                "scatter factor {} (one standard deviation)",
+                four(table.factor())
+            );
+        }
+    }
+    text
+}
+
+fn law(series: &Series, law: &PowerLaw) -> String {
+    let quantity = series.ordinate.fitted();
+    let between = |low: f64, high: f64| format!("({} to {}, 90 %)", four(low), four(high));
+    let slope = law.reach * law.covariance[1][1].sqrt();
+    let [low, high] = law.band(law.reference);
+    let mut text = format!(
+        "  {} = {} ({} / {})^{:.3}\n",
+        fitted(series.ordinate),
+        show(law.coefficient, quantity),
+        sign(series.abscissa),
+        show(law.reference, series.abscissa.quantity()),
+        law.exponent,
+    );
+    let _ = writeln!(
+        text,
+        "  exponent        {} {}\n  coefficient     {} {} {}\n  scatter factor  {} (one standard deviation; one reading about the law {})",
+        four(law.exponent),
+        between(law.exponent - slope, law.exponent + slope),
+        four(law.coefficient),
+        quantity.unit(),
+        between(low, high),
+        four(law.factor()),
+        four(law.scatter.exp()),
+    );
+    match law.agreement {
+        Some(agreement) => {
+            let word = if agreement.too_small() {
+                "sigma is stated too small"
+            } else if agreement.too_large() {
+                "sigma is stated too large"
+            } else {
+                "sigma agrees with the residuals"
+            };
+            let _ = writeln!(
+                text,
+                "  chi squared     {} on {} degrees of freedom, {} each: {word}",
+                four(agreement.chi_squared),
+                law.degrees,
+                four(agreement.reduced),
+            );
+        }
+        None => {
+            let _ = writeln!(
+                text,
+                "  sigma not stated: scatter from the residuals, {} degrees of freedom, Student's t",
+                law.degrees
+            );
+        }
+    }
+    text.push_str(&bands(series, law));
+    text
+}
+
+/// The law over its range with both bands.
+fn bands(series: &Series, law: &PowerLaw) -> String {
+    let (x_unit, x_size) = unit(series.abscissa.quantity());
+    let [from, to] = law.range;
+    let rows: Vec<Vec<String>> = (0..ROWS)
+        .map(|row| from * (to / from).powf(row as f64 / (ROWS - 1) as f64))
+        .map(|x| {
+            let ([low, high], [least, most]) = (law.band(x), law.prediction(x));
+            [x / x_size, low, law.at(x), high, least, most]
+                .map(four)
+                .to_vec()
+        })
+        .collect();
+    let y = format!(
+        "{} {}",
+        fitted(series.ordinate),
+        series.ordinate.fitted().unit()
+    );
+    let right = Side::Right;
+    aligned(
+        &[
+            (&format!("{}\n{x_unit}", series.abscissa.name()), right),
+            (&format!("{y}\n5 %"), right),
+            ("\nlaw", right),
+            ("\n95 %", right),
+            ("another reading\n5 %", right),
+            ("\n95 %", right),
+        ],
+        &rows,
+    )
+}
+
+/// A fitted unknown for the terminal.
+pub fn answer(asked: &Question, answer: &Answer, name: &str) -> String {
+    let shown = |share: f64| asked.unknown.shown(asked.range.at(share));
+    let profile = &answer.profile;
+    let percent = |ln: f64| format!("{:.1} %", 100.0 * ln.exp_m1());
+    let [low, high] = profile.interval;
+    let mut text = format!(
+        "{}\n{}: {} reading{}, {}\nfield {}\nunknown: {}, sought from {} to {}\n\n",
+        plain(&answer.title),
+        plain(name),
+        answer.readings,
+        if answer.readings == 1 { "" } else { "s" },
+        plain(&answer.planes),
+        answer.field,
+        plain(&asked.unknown.name()),
+        shown(0.0),
+        shown(1.0),
+    );
+    let open = |end: bool| if end { " (the end of the range)" } else { "" };
+    let _ = writeln!(
+        text,
+        "likeliest    {}\n90 % from    {}{}\n     to      {}{}",
+        shown(profile.best),
+        shown(low),
+        open(matches!(
+            profile.verdict,
+            Verdict::AboveOnly | Verdict::Undetermined
+        )),
+        shown(high),
+        open(matches!(
+            profile.verdict,
+            Verdict::BelowOnly | Verdict::Undetermined
+        )),
+    );
+    let _ = writeln!(
+        text,
+        "\nover the range the model moves {}; readings leave {} open, other inputs {}, together {}\n(one standard deviation; numerical error {} counted among the other inputs)",
+        moved(profile.movement),
+        percent(answer.measured),
+        percent(answer.other),
+        percent(answer.whole),
+        percent(answer.numerical_error.ln_1p()),
+    );
+    if let Some(scatter) = answer.scatter {
+        let _ = writeln!(
+            text,
+            "sigma not stated: one reading scatters by {}, found from them",
+            percent(scatter)
+        );
+    }
+    if let Some(chance) = profile.chance {
+        let _ = writeln!(
+            text,
+            "chi squared {} for {} readings; chance of more {:.0} %",
+            four(profile.chi_squared),
+            answer.readings,
+            100.0 * chance
+        );
+    }
+    let _ = writeln!(
+        text,
+        "contact only is {:.1} % of the measured resistance at the likeliest value",
+        100.0 * answer.contact_share
+    );
+    let inputs = if answer.inputs.is_empty() {
+        "none: other inputs are taken as nominal".to_owned()
+    } else {
+        format!(
+            "{}: integrated out by mean and covariance of drawn joints (marginal likelihood)",
+            answer.inputs.join(", ")
+        )
+    };
+    let _ = writeln!(
+        text,
+        "{}",
+        wrapped(&format!("other inputs: {inputs}"), WIDTH, 2)
+    );
+    let _ = writeln!(
+        text,
+        "model solved at {} values; missed between them by {:.2} % at most",
+        answer.nodes.len(),
+        100.0 * answer.interpolation
+    );
+    let told = text::cautions(&answer.cautions, Detail::Full);
+    if !told.is_empty() {
+        let _ = write!(text, "\n{told}");
+    }
+    let sets = asked.unknown.sets(asked.range.at(profile.best));
+    if profile.verdict == Verdict::Determined && !sets.is_empty() {
+        text.push_str("\nthe likeliest joint:");
+        for path in sets.iter().filter_map(|set| set.split_once('=')) {
+            let _ = write!(text, " --set '{}={}'", path.0, shown(profile.best));
+        }
+        text.push('\n');
+    }
+    text
+}
+
+/// A fitted series in SI.
+pub fn series_json(series: &Series, (name, block): (&str, &str)) -> Value {
+    let branches: Vec<Value> = series.branches.iter().map(branch_json).collect();
+    json!({
+        "ringsum": env!("CARGO_PKG_VERSION"),
+        "format": 1,
+        "file": name,
+        "fit": "law",
+        "abscissa": series.abscissa.name(),
+        "ordinate": measured(series.ordinate),
+        "branches": branches,
+        "hysteresis": series.hysteresis.map(|found| json!({
+            "at": found.at,
+            "ratio": found.ratio,
+            "interval": found.interval,
+        })),
+        "cautions": json::cautions(&series.cautions),
+        "measured": block,
+    })
+}
+
+fn branch_json(branch: &Branch) -> Value {
+    let outliers: Vec<Value> = branch
+        .outliers
+        .iter()
+        .map(|outlier| {
+            json!({
+                "line": branch.readings[outlier.index].line,
+                "residual": outlier.residual,
+                "threshold": outlier.threshold,
+            })
+        })
+        .collect();
+    let shape = match &branch.shape {
+        Shape::Law(law) => json!({
+            "reference": law.reference,
+            "coefficient": law.coefficient,
+            "exponent": law.exponent,
+            "covariance": law.covariance,
+            "scatter": law.scatter,
+            "degrees_of_freedom": law.degrees,
+            "chi_squared": law.agreement.map(|found| found.chi_squared),
+            "reduced_chi_squared": law.agreement.map(|found| found.reduced),
+            "bend_chance": law.bend.map(|bend| bend.chance),
+            "reach": law.reach,
+        }),
+        Shape::Table(table) => json!({ "rows": table.rows, "scatter": table.scatter }),
+    };
+    let name = match &branch.shape {
+        Shape::Law(_) => "law",
+        Shape::Table(_) => "table",
+    };
+    json!({
+        "direction": branch.direction.map(crate::fit::Direction::name),
+        "readings": branch.readings.len(),
+        "range": branch.range(),
+        "scatter_factor": branch.shape.factor(),
+        name: shape,
+        "outliers": outliers,
+    })
+}
+
+/// A fitted unknown; values in the unit they were asked in, all else in SI.
+pub fn answer_json(asked: &Question, answer: &Answer, name: &str) -> Value {
+    let value = |share: f64| asked.range.at(share);
+    let profile = &answer.profile;
+    let curve: Vec<[f64; 2]> = profile
+        .curve
+        .iter()
+        .step_by(20)
+        .map(|(share, deviance)| [value(*share), *deviance])
+        .collect();
+    json!({
+        "ringsum": env!("CARGO_PKG_VERSION"),
+        "format": 1,
+        "file": name,
+        "fit": "unknown",
+        "title": answer.title,
+        "field": answer.field,
+        "planes": answer.planes,
+        "unknown": asked.unknown.name(),
+        "range": [asked.range.from, asked.range.to],
+        "best": { "value": value(profile.best), "text": asked.unknown.shown(value(profile.best)) },
+        "interval": profile.interval.map(value),
+        "verdict": verdict(profile.verdict),
+        "readings": answer.readings,
+        "chi_squared": profile.chi_squared,
+        "chance": profile.chance,
+        "movement": profile.movement,
+        "deviation": { "readings": answer.measured, "other_inputs": answer.other, "together": answer.whole },
+        "contact_share": answer.contact_share,
+        "numerical_error": answer.numerical_error,
+        "interpolation": answer.interpolation,
+        "nodes": answer.nodes,
+        "inputs": answer.inputs,
+        "profile": curve,
+        "cautions": json::cautions(&answer.cautions),
+    })
+}
+
+fn verdict(verdict: Verdict) -> &'static str {
+    match verdict {
+        Verdict::Determined => "determined",
+        Verdict::BelowOnly => "bounded-below",
+        Verdict::AboveOnly => "bounded-above",
+        Verdict::Undetermined => "not-determined",
+    }
+}

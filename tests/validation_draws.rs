@@ -1,0 +1,9 @@
+//! The draws: compiled plan against the chain itself, surfaces against solved draws, bands against
+//! truths that are known.
+
+#[path = "validation_draws/bands.rs"]
+mod bands;
+#[path = "validation_draws/coverage.rs"]
+mod coverage;
+#[path = "validation_draws/plan.rs"]
+mod plan;

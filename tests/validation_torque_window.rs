@@ -1,0 +1,208 @@
+//! The ends of the torque window against a fine sweep of the same chain, on the closed-form field.
+
+use ringsum::{
+    estimate::{Options, Range, Side, TorqueSweep},
+    joint::{self, Joint},
+    uncertainty::{FIRST, REQUIREMENT, SweepOptions, torque_sweep},
+};
+
+/// Four M4 in aluminium in vacuum, with a load along the bolts and a limit of the rise.
+fn joint(rise: &str, load: &str) -> Joint {
+    let text = format!(
+        r#"
+title = "Window"
+[service]
+medium = "vacuum"
+temperature = "20 °C"
+heat = "20 W"
+require = {{ rise = "{rise}" }}
+[[plate]]
+material = "Al 6061-T6"
+thickness = "5 mm"
+size = ["60 mm", "60 mm"]
+finish = "milled"
+[[plate]]
+material = "Al 6061-T6"
+thickness = "8 mm"
+size = ["60 mm", "60 mm"]
+finish = "milled"
+cooled = {{ face = "isothermal" }}
+[fastener]
+thread = "M4"
+grade = "A2-70"
+head = "socket"
+torque = "1.7 N·m"
+engagement = {{ kind = "tapped", length = "8 mm" }}
+axial_load = {{ value = "{load}", introduction = 0.5, lasting = false }}
+pattern = {{ kind = "grid", count = [2, 2], margin = "10 mm" }}
+"#
+    );
+    joint::read(&text).unwrap_or_else(|faults| panic!("{faults:#?}"))
+}
+
+fn swept(joint: &Joint, steps: usize, confidence: f64) -> TorqueSweep {
+    let options = SweepOptions {
+        group: 0,
+        from: Some(0.2),
+        to: Some(3.0),
+        steps,
+        confidence,
+        chain: Options { draws: 64, seed: 1 },
+    };
+    torque_sweep(joint, &options).expect("a sweep")
+}
+
+/// First torque of a fine sweep at which the high end of the band meets the limit, and the step.
+fn fine(joint: &Joint, confidence: f64) -> (f64, f64) {
+    let fine = swept(joint, 201, confidence);
+    let (limit, _) = fine.required.expect("a rise over the heat");
+    let first = fine
+        .points
+        .iter()
+        .find(|point| point.source_to_sink.high.expect("draws were made") <= limit)
+        .expect("some torque meets it");
+    (first.torque, 2.8 / 200.0)
+}
+
+/// A rise that a middle torque just meets at the high end of the band.
+fn middling() -> String {
+    let sweep = swept(&joint("1000 K", "0 N"), 5, 0.9);
+    let high = sweep.points[2]
+        .source_to_sink
+        .high
+        .expect("draws were made");
+    format!("{} K", 20.0 * high * 1.02)
+}
+
+#[test]
+fn the_lower_end_is_where_a_fine_sweep_first_meets_the_requirement() {
+    let rise = middling();
+    let joint = joint(&rise, "0 N");
+    for confidence in [0.9, 0.6] {
+        let window = swept(&joint, 5, confidence).window;
+        let heat = window.heat.expect("a rise is required");
+        assert_eq!(heat.len(), 1, "{heat:?}");
+        assert_eq!(heat[0].low.by, REQUIREMENT);
+        let (first, step) = fine(&joint, confidence);
+        // The end is found to 0.1 % of the largest torque, the fine sweep to its step.
+        let found = heat[0].low.torque;
+        assert!(
+            (first - step - 0.003..=first + 0.003).contains(&found),
+            "{found} {first} at {confidence}"
+        );
+    }
+}
+
+#[test]
+fn less_confidence_asks_for_less_torque() {
+    let rise = middling();
+    let joint = joint(&rise, "0 N");
+    let low = |confidence: f64| {
+        let heat = swept(&joint, 5, confidence).window.heat.unwrap();
+        heat[0].low.torque
+    };
+    assert!(low(0.5) < low(0.9));
+}
+
+#[test]
+fn strength_and_separation_end_where_a_fine_sweep_says() {
+    let joint = joint("1000 K", "600 N");
+    let window = swept(&joint, 5, 0.9).window;
+    let strength = window.strength.expect("both are known");
+    let fine = swept(&joint, 201, 0.9);
+    let step = 2.8 / 200.0;
+    // The last torque that passes every limit of strength.
+    let last = fine
+        .points
+        .iter()
+        .rfind(|point| point.passes)
+        .expect("low torques pass");
+    assert!((last.torque..=last.torque + step).contains(&strength.high.torque));
+    // The least force in service must carry 1.2 times what 600 N take from the faces: by hand from the
+    // force at assembly, whose low end rises in proportion to torque.
+    let separation = window
+        .limits
+        .iter()
+        .find(|limit| limit.side == Side::Least)
+        .expect("a load asks for force");
+    assert!((separation.torque - strength.low.torque).abs() < 1e-12);
+    // 1.7 N·m clamps at least about 1.35 kN: 720 N and the losses need some 0.9 to 1.6 N·m.
+    assert!((0.5..2.0).contains(&separation.torque), "{separation:?}");
+    let Range { low, high } = window.both.expect("1000 K are met by any torque");
+    assert_eq!(low, strength.low);
+    assert_eq!(high, strength.high);
+}
+
+#[test]
+fn the_knee_has_nine_tenths_of_the_conductance_at_the_best() {
+    let joint = joint("1000 K", "0 N");
+    let sweep = swept(&joint, 5, 0.9);
+    let knee = sweep.window.knee.expect("vacuum gains by force");
+    let fine = swept(&joint, 201, 0.9);
+    let (largest, _) = sweep.largest.expect("a yield strength");
+    // What the joint adds at the largest torque, linear between two fine rows.
+    let pair = fine
+        .points
+        .windows(2)
+        .find(|pair| pair[0].torque <= largest && largest <= pair[1].torque)
+        .expect("the largest torque is swept");
+    let share = (largest - pair[0].torque) / (pair[1].torque - pair[0].torque);
+    let [one, other] = [&pair[0], &pair[1]].map(|point| point.added_by_joint.nominal);
+    let least = one + share * (other - one);
+    let first = fine
+        .points
+        .iter()
+        .find(|point| point.added_by_joint.nominal <= least / 0.9)
+        .expect("the best row does");
+    let step = 2.8 / 200.0;
+    assert!(
+        (first.torque - step - 0.003..=first.torque + 0.003).contains(&knee),
+        "{knee} {}",
+        first.torque
+    );
+}
+
+#[test]
+fn a_shut_window_tries_changes_one_at_a_time() {
+    // A rise that is met at the largest torque of the sweep alone, beyond strength.
+    let open = swept(&joint("1000 K", "0 N"), 5, 0.9);
+    let [.., before, last] = open.points.as_slice() else {
+        panic!("five rows");
+    };
+    let middle = |of: fn(&ringsum::estimate::TorquePoint) -> f64| 0.5 * (of(before) + of(last));
+    let high = middle(|point| point.source_to_sink.high.unwrap());
+    let joint = joint(&format!("{} K", 20.0 * high), "0 N");
+    let window = swept(&joint, 5, 0.9).window;
+    assert!(window.both.is_none(), "{window:?}");
+    assert!(!window.plates_fail);
+    let ratio = window.force_ratio.expect("heat asks for more force");
+    assert!(ratio > 1.0);
+    assert_eq!(window.larger_thread.as_deref(), Some("M5"));
+    // Friction, tool, elongation, grade.
+    assert_eq!(window.trials.len(), 4, "{:?}", window.trials);
+    for trial in &window.trials {
+        let Some(range) = trial.window else { continue };
+        assert!(range.low.by != FIRST && range.low.torque < range.high.torque);
+    }
+    let elongation = window
+        .trials
+        .iter()
+        .find(|trial| trial.change.contains("elongation"))
+        .expect("it is tried");
+    // Bolts of known elongation may be tightened closer to their strength: the low end rises most.
+    assert!(elongation.window.is_some(), "{:?}", window.trials);
+}
+
+#[test]
+fn what_perfect_contact_fails_no_torque_meets() {
+    let window = swept(&joint("0.001 K", "0 N"), 3, 0.9).window;
+    assert!(window.plates_fail && window.both.is_none());
+    assert!(window.trials.is_empty());
+    assert_eq!(window.heat, Some(Vec::new()));
+}
+
+#[test]
+fn the_same_digits_come_again() {
+    let joint = joint(&middling(), "100 N");
+    assert_eq!(swept(&joint, 5, 0.9), swept(&joint, 5, 0.9));
+}
