@@ -1,7 +1,9 @@
 //! Arguments, files and exit codes: the only input and output.
 
+mod batch;
 mod chain;
 mod check;
+mod compare;
 mod console;
 mod draw;
 mod drawings;
@@ -16,6 +18,7 @@ mod input;
 mod list;
 mod new;
 mod output;
+mod results;
 mod torque;
 
 use crate::cli::console::{Color, Console, Outcome, Trouble};
@@ -59,6 +62,7 @@ enum Command {
     New(new::New),
     Check(check::Check),
     Estimate(estimate::Estimate),
+    Compare(compare::Compare),
     Torque(torque::Torque),
     Drivers(drivers::Drivers),
     Draw(draw::Draw),
@@ -113,6 +117,7 @@ impl Command {
             Self::New(command) => command.run(console),
             Self::Check(command) => command.run(console),
             Self::Estimate(command) => command.run(console),
+            Self::Compare(command) => command.run(console),
             Self::Torque(command) => command.run(console),
             Self::Drivers(command) => command.run(console),
             Self::Draw(command) => command.run(console),

@@ -2,6 +2,7 @@
 
 mod axis;
 mod clip;
+mod comparison;
 mod cumulative;
 mod fit;
 mod flags;
@@ -18,6 +19,7 @@ mod tornado;
 mod torque;
 mod warmth;
 
+pub use comparison::{ComparisonPlot, ComparisonRow};
 pub use cumulative::{CumulativePlot, Curve, RadiusMark};
 pub use fit::{FitPlot, ProfilePlot};
 pub use plan::{
@@ -52,6 +54,8 @@ pub enum Drawing {
     Cumulative(CumulativePlot),
     /// Resistance against torque.
     Torque(TorqueSweep),
+    /// Several joints side by side.
+    Comparison(Box<ComparisonPlot>),
     /// What each input alone does to an answer.
     Tornado(Box<Ranking>),
     /// Own readings with the law through them.
@@ -103,6 +107,7 @@ fn sheet(drawing: &Drawing) -> Result<sheet::Sheet, FigureError> {
         Drawing::Section(plot) => section::draw(plot),
         Drawing::Cumulative(plot) => cumulative::draw(plot),
         Drawing::Torque(sweep) => torque::draw(sweep),
+        Drawing::Comparison(plot) => comparison::draw(plot),
         Drawing::Tornado(ranking) => tornado::draw(ranking),
         Drawing::Fit(plot) => fit::draw(plot),
         Drawing::Profile(plot) => fit::draw_profile(plot),

@@ -2,6 +2,8 @@
 
 pub mod card;
 pub mod catalogue;
+pub mod comparison;
+pub mod csv;
 pub mod drivers;
 pub mod fit;
 pub mod json;

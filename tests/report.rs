@@ -51,6 +51,7 @@ fn interface() -> InterfaceResult {
 fn case(name: &'static str, sink_temperature: f64) -> CaseResult {
     let bolt = BoltResult {
         at: [0.007, 0.007],
+        missing: false,
         force: band(2100.0, 2510.4, 3020.0),
         force_in_service: band(1800.0, 2400.0, 2950.0),
         strength_use: Some([0.612, 0.755]),
