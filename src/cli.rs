@@ -1,5 +1,6 @@
 //! Arguments, files and exit codes: the only input and output.
 
+mod arrange;
 mod batch;
 mod chain;
 mod check;
@@ -33,7 +34,7 @@ ringsum --help                 lists every command
 ";
 
 const EXIT_CODES: &str = "\
-Exit codes: 0 done, 1 failure, 2 faulty input or usage, 3 cautions with --strict.
+Exit codes: 0 done, 1 failure, 2 faulty input or usage, 3 cautions with --strict, 130 interrupted.
 Of several files, any failure or fault makes it 1 after all are done.
 A joint file named - is read from standard input.";
 
@@ -66,6 +67,7 @@ enum Command {
     Torque(torque::Torque),
     Drivers(drivers::Drivers),
     Draw(draw::Draw),
+    Arrange(arrange::Arrange),
     Fit(Box<fit::Fit>),
     List(list::List),
     Explain(explain::Explain),
@@ -121,6 +123,7 @@ impl Command {
             Self::Torque(command) => command.run(console),
             Self::Drivers(command) => command.run(console),
             Self::Draw(command) => command.run(console),
+            Self::Arrange(command) => command.run(console),
             Self::Fit(command) => command.run(console),
             Self::List(command) => command.run(console),
             Self::Explain(command) => command.run(console),

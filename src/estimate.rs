@@ -13,7 +13,7 @@ mod torques;
 mod window;
 
 pub(crate) use chain::LARGE_ERROR;
-pub use chain::{Chain, DrawPlan, Drawn, Meeting, State, Workspace};
+pub use chain::{Chain, Conditions, DrawPlan, Drawn, ForceEnd, Meeting, State, Workspace};
 pub use choice::{Choice, Fineness, Watch};
 pub use forces::Strength;
 pub use loss::{Loss, worst_loss};

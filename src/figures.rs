@@ -1,5 +1,6 @@
 //! Drawings from results only: the same marks as SVG and as PNG.
 
+mod arrange;
 mod axis;
 mod clip;
 mod comparison;
@@ -19,6 +20,7 @@ mod tornado;
 mod torque;
 mod warmth;
 
+pub use arrange::ArrangePlot;
 pub use comparison::{ComparisonPlot, ComparisonRow};
 pub use cumulative::{CumulativePlot, Curve, RadiusMark};
 pub use fit::{FitPlot, ProfilePlot};
@@ -54,6 +56,8 @@ pub enum Drawing {
     Cumulative(CumulativePlot),
     /// Resistance against torque.
     Torque(TorqueSweep),
+    /// Layouts of a search.
+    Arrange(Box<ArrangePlot>),
     /// Several joints side by side.
     Comparison(Box<ComparisonPlot>),
     /// What each input alone does to an answer.
@@ -107,6 +111,7 @@ fn sheet(drawing: &Drawing) -> Result<sheet::Sheet, FigureError> {
         Drawing::Section(plot) => section::draw(plot),
         Drawing::Cumulative(plot) => cumulative::draw(plot),
         Drawing::Torque(sweep) => torque::draw(sweep),
+        Drawing::Arrange(plot) => arrange::draw(plot),
         Drawing::Comparison(plot) => comparison::draw(plot),
         Drawing::Tornado(ranking) => tornado::draw(ranking),
         Drawing::Fit(plot) => fit::draw(plot),

@@ -8,6 +8,7 @@ pub mod checked;
 pub mod fields;
 pub mod sections;
 
+mod arrange;
 mod beyond_cone;
 mod cold;
 mod collector;
@@ -260,6 +261,7 @@ fn assembled(file: &Record, tables: &mut Tables<'_>, collector: &mut Collector) 
         limits::seats(file, fasteners, collector);
     }
     let losses = contact::losses(file, collector);
+    let arrange = arrange::read(file, collector);
     let bolts_scatter = uncertainty::bolts(file, collector);
     let names: Vec<String> = plates.iter().map(|plate| plate.name.clone()).collect();
     let plates: Option<Vec<Plate>> = plates
@@ -279,6 +281,7 @@ fn assembled(file: &Record, tables: &mut Tables<'_>, collector: &mut Collector) 
         losses: losses?,
         cost: file.number("cost"),
         missing: Vec::new(),
+        arrange: arrange?,
         uncertain: uncertainty::stated(file, &names),
         bolts_scatter: bolts_scatter?,
         assumptions: Vec::new(),

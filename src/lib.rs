@@ -26,6 +26,8 @@ pub mod uncertainty;
 
 pub mod fit;
 
+pub mod layout;
+
 pub mod report;
 
 pub mod figures;

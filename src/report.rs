@@ -1,5 +1,6 @@
 //! Results as text, JSON and tables.
 
+pub mod arrange;
 pub mod card;
 pub mod catalogue;
 pub mod comparison;

@@ -1,5 +1,7 @@
 //! Figures as files: well formed, complete, repeatable, and errors instead of panics.
 
+#[path = "figures/arrange.rs"]
+mod arrange;
 #[path = "figures/comparison.rs"]
 mod comparison;
 #[path = "figures/heat.rs"]
@@ -251,6 +253,7 @@ fn every_drawing() -> Vec<Drawing> {
         Drawing::Plan(furnished(
             PlanMap::gap("Box on panel", &solved()).expect("a solved field knows its gap"),
         )),
+        arrange::drawing(),
         heat::flux(),
         Drawing::Faces(Box::new(heat::faces(Some(22.0)))),
         Drawing::Section(Box::new(heat::section(Some(22.0)))),
@@ -535,6 +538,10 @@ fn hostile_titles_stay_text() {
                 plot.title = HOSTILE.repeat(40);
                 plot.curves[0].label = HOSTILE.into();
                 plot.marks[0].name = HOSTILE.into();
+            }
+            Drawing::Arrange(plot) => {
+                plot.answer.title = HOSTILE.repeat(40);
+                plot.answer.rows[0].label = HOSTILE.repeat(9);
             }
             Drawing::Torque(sweep) => {
                 sweep.title = HOSTILE.into();

@@ -63,6 +63,8 @@ pub enum Outcome {
     Faulty,
     /// The computation or the writing failed.
     Failed,
+    /// The user stopped it; what was found is told.
+    Interrupted,
 }
 
 impl Outcome {
@@ -73,6 +75,7 @@ impl Outcome {
             Self::Failed => 1,
             Self::Faulty => 2,
             Self::Cautioned => 3,
+            Self::Interrupted => 130,
         }
     }
 

@@ -112,7 +112,7 @@ fn title(joint: &Joint, interface: usize) -> String {
     }
 }
 
-fn outline(plate: &Plate) -> PlanOutline {
+pub(super) fn outline(plate: &Plate) -> PlanOutline {
     PlanOutline {
         name: plate.name.clone(),
         shape: match &plate.outline {
@@ -169,7 +169,7 @@ fn moved(points: &[[f64; 2]], [x, y]: [f64; 2]) -> Vec<[f64; 2]> {
         .collect()
 }
 
-fn heated(zone: Zone) -> Option<PlanShape> {
+pub(super) fn heated(zone: Zone) -> Option<PlanShape> {
     match zone {
         Zone::Face => None,
         Zone::Rectangle { centre, size } => Some(PlanShape::Rectangle {

@@ -19,7 +19,7 @@ use std::{
     sync::{Arc, OnceLock},
 };
 
-use conditions::Conditions;
+pub use conditions::Conditions;
 use cone::ConeModel;
 use elastic::ElasticModel;
 use form::with_error;
@@ -32,7 +32,7 @@ use crate::{
         forces::{self, Group},
         torques::SEPARATION,
     },
-    joint::{Fastener, Joint, Medium, Tightening},
+    joint::{Bounds, Fastener, Joint, Medium, Tightening},
     pressure::Cone,
     resistance::{self, Cells, Path},
 };
@@ -65,6 +65,15 @@ pub struct State {
     pub conditions: Conditions,
     /// Resistances, model form applied.
     pub path: Path,
+}
+
+/// An end of the clamp force in service.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum ForceEnd {
+    /// Highest friction, weakest tool, all losses.
+    Least,
+    /// Lowest friction, strongest tool, no loss.
+    Largest,
 }
 
 /// How the faces meet at a point.
@@ -133,6 +142,34 @@ impl<'a> Chain<'a> {
     /// Groups whose preload is stated keep it.
     pub fn with_torque(&self, group: usize, torque: f64) -> Result<Chain<'static>, Failure> {
         self.with(with_torque(self.joint(), group, torque))
+    }
+
+    /// The same joint with every bolt at its least or its largest force in service of one case;
+    /// plates and contact are shared.
+    ///
+    /// Checked: `force_ends_are_those_of_the_band`.
+    pub fn at_force_end(&self, case: usize, end: ForceEnd) -> Result<Chain<'static>, Failure> {
+        let mut joint = self.joint().clone();
+        // The ends hold every loss and every load already.
+        joint.losses = None;
+        for (fastener, group) in joint.fasteners.iter_mut().zip(&self.groups) {
+            let band = group.service_band(self.joint(), fastener, case);
+            let force = match end {
+                ForceEnd::Least => band.low,
+                ForceEnd::Largest => band.high,
+            };
+            fastener.tightening = Tightening::Preload(Bounds::exact(force.unwrap_or(band.nominal)));
+            fastener.axial_load = None;
+        }
+        let mut chain = Chain {
+            joint: Cow::Owned(joint),
+            groups: self.groups.iter().map(Group::held).collect(),
+            group_of: self.group_of.clone(),
+            model: self.model.clone(),
+            error: self.error.clone(),
+        };
+        chain.model = chain.levelled()?;
+        Ok(chain)
     }
 
     /// The same joint with a group tightened or graded otherwise; plates, cells and grid are shared, so

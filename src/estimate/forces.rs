@@ -75,6 +75,14 @@ impl Group {
         })
     }
 
+    /// The same where no temperature moves the force any more.
+    pub fn held(&self) -> Self {
+        Self {
+            growth: vec![0.0; self.growth.len()],
+            ..self.clone()
+        }
+    }
+
     /// What acts on the force of one case at a realisation.
     pub fn losses(&self, joint: &Joint, case: usize, at: &Realisation) -> Losses {
         let growth = self.growth[case];

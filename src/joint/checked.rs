@@ -1,5 +1,6 @@
 //! The checked joint: SI, nothing missing, every default already recorded as an assumption.
 
+mod arrange;
 mod bounds;
 mod flatness_map;
 mod heat;
@@ -10,6 +11,7 @@ mod uncertain;
 
 use crate::{catalog, diagnostic::Assumption, numerics::distribution::Shape};
 
+pub use arrange::{Arrange, Family, Symmetry};
 pub use bounds::Bounds;
 pub use flatness_map::FlatnessMap;
 pub use heat::{CooledPart, Cooling, Edge, HeatedZone, Heating, Sink, Source, Zone};
@@ -53,6 +55,8 @@ pub struct Joint {
     pub cost: Option<f64>,
     /// Bolts that are left out, counted from 0 in file order, rising; their holes stay.
     pub missing: Vec<usize>,
+    /// What a search of layouts may try; none where the file says nothing of it.
+    pub arrange: Option<Arrange>,
     /// Values that the file states with a spread of their own.
     pub uncertain: Vec<Uncertain>,
     /// Whether the bolts scatter alike.

@@ -1,5 +1,6 @@
 //! The fields of the joint file, part by part: the file itself, service, contact, measured, losses.
 
+mod arrange;
 mod fasteners;
 mod filler;
 mod heat;
@@ -16,6 +17,7 @@ use crate::{
     units::Quantity,
 };
 
+pub use arrange::{ARRANGE, KEEP_OUT, SIZE};
 pub use fasteners::{ENGAGEMENT, FASTENER, FRICTION, PATTERN, TORQUE};
 pub use filler::{FILLER, MEASURED, MEASURED_LAW};
 pub use heat::{CONDUCTIVITY, COOLED, HEATED, ISOLATING, RADIATION};
@@ -136,6 +138,12 @@ pub static FILE: Section = Section {
             "{ settling = \"guide\", relaxation = \"5 %\" }",
         )
         .default("none in the nominal force"),
+        field(
+            "arrange",
+            Kind::Table(&ARRANGE),
+            "what `ringsum arrange` may try for the first fastener group; nothing else reads it",
+            "{ bolts = [4, 12], symmetry = \"both\" }",
+        ),
         field(
             "uncertainty",
             Kind::Table(&UNCERTAINTY),

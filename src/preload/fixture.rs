@@ -197,6 +197,7 @@ pub fn joint() -> Joint {
         losses: None,
         cost: None,
         missing: Vec::new(),
+        arrange: None,
         uncertain: Vec::new(),
         bolts_scatter: Bolts::ONE_LOT,
         assumptions: Vec::new(),

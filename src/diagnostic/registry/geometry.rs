@@ -4,6 +4,13 @@ use crate::diagnostic::registry::{Entry, fault};
 
 pub(super) const ENTRIES: &[Entry] = &[
     fault(
+        "arrange/bolts",
+        "Numbers of bolts that cannot be tried",
+        "A search of layouts tries from the fewest to the most bolts; the fewest come first, and \
+         more than 60 would take a search too long to be of use.",
+        "State `bolts = [4, 12]` in `[arrange]`, or one number.",
+    ),
+    fault(
         "plate/hole-outside",
         "A hole that leaves its plate",
         "The hole lies outside the plate or cuts its edge. The ring of material that carries the \

@@ -244,6 +244,11 @@ impl Chain<'_> {
         Warmth::uniform(joint.plates.len(), joint.service.cases[case].temperature)
     }
 
+    /// What heat meets in one case at nominal, all plates as cold as the sink; nothing is solved.
+    pub fn cold_conditions(&self, case: usize) -> Result<Conditions, Failure> {
+        self.conditions_at(case, &self.cold(case), &Realisation::default())
+    }
+
     /// The same with plates of known temperature.
     pub(super) fn conditions_at(
         &self,

@@ -1,0 +1,243 @@
+//! `ringsum arrange`: what it prints, writes and refuses, and that a stopped search goes on.
+
+use snapbox::cmd::{Command, cargo_bin};
+use std::fs;
+#[cfg(unix)]
+use std::path::Path;
+use tempfile::{TempDir, tempdir};
+
+/// A joint whose fields take a second together, with comments that must stay.
+const JOINT: &str = r#"# Asked of the lid.
+[service]
+medium = "vacuum"
+temperature = "20 °C"
+heat = "5 W" # of the amplifier
+require = { rise = "6 K" }
+
+[[plate]]
+material = "Al 6061-T6"
+thickness = "3 mm"
+size = ["50 mm", "40 mm"]
+finish = "milled"
+
+[[plate]]
+material = "Al 6061-T6"
+thickness = "3 mm"
+size = ["50 mm", "40 mm"]
+finish = "milled"
+cooled = { film = "2000 W/(m²·K)" }
+
+[fastener] # those of the lid
+thread = "M4"
+grade = "8.8"
+head = "socket"
+torque = "1 N·m"
+at = [["10 mm", "10 mm"]] # a start
+
+[arrange]
+bolts = [1, 4]
+families = ["edge", "free"]
+symmetry = "x"
+step = "8 mm"
+"#;
+
+fn folder() -> TempDir {
+    let folder = tempdir().expect("there is a folder");
+    fs::write(folder.path().join("lid.toml"), JOINT).expect("it can be written");
+    folder
+}
+
+fn ringsum(folder: &TempDir) -> Command {
+    Command::new(cargo_bin!("ringsum"))
+        .env("NO_COLOR", "1")
+        .current_dir(folder.path())
+}
+
+fn text(bytes: &[u8]) -> String {
+    String::from_utf8(bytes.to_vec()).expect("output is text")
+}
+
+fn json(folder: &TempDir, arguments: &[&str]) -> serde_json::Value {
+    let assert = ringsum(folder)
+        .args(["arrange", "lid.toml", "--json", "--solve", "2"])
+        .args(arguments)
+        .assert()
+        .code(0);
+    serde_json::from_slice(&assert.get_output().stdout).expect("it is JSON")
+}
+
+#[test]
+fn each_layout_of_the_front_is_a_joint_that_estimate_reproduces() {
+    let folder = folder();
+    fs::create_dir(folder.path().join("out")).expect("it can be made");
+    let found = json(&folder, &["--write", "out", "--draw", "layouts.svg"]);
+    assert!(found["complete"] == true, "{found}");
+    let rows = found["rows"].as_array().expect("there are rows");
+    let front: Vec<&serde_json::Value> = rows.iter().filter(|row| row["front"] == true).collect();
+    assert!(!front.is_empty());
+    let names: Vec<String> = fs::read_dir(folder.path().join("out"))
+        .expect("it is there")
+        .map(|entry| {
+            entry
+                .expect("it is readable")
+                .file_name()
+                .into_string()
+                .expect("a name")
+        })
+        .collect();
+    assert_eq!(names.len(), front.len(), "{names:?}");
+    let row = front[0];
+    let name = format!(
+        "out/{:02}-m4-{}.toml",
+        row["bolts"].as_u64().expect("a number"),
+        row["pattern"].as_str().expect("a word")
+    );
+    let written = fs::read_to_string(folder.path().join(&name)).expect("it was written");
+    // All but the places stays, comments with it.
+    for line in JOINT.lines().filter(|line| !line.starts_with("at =")) {
+        assert!(written.contains(line), "{line}");
+    }
+    assert!(written.contains("] # a start"), "{written}");
+    let estimate = ringsum(&folder)
+        .args([
+            "estimate",
+            &name,
+            "--resolution",
+            "fast",
+            "--draws",
+            "0",
+            "--json",
+        ])
+        .assert()
+        .code(0);
+    let estimate: serde_json::Value =
+        serde_json::from_slice(&estimate.get_output().stdout).expect("it is JSON");
+    let printed = &estimate["results"]["source_to_sink"]["resistance"]["nominal"];
+    let [printed, found] = [printed, &row["resistance"]["source_to_sink"]]
+        .map(|value| value.as_f64().expect("a number"));
+    // The same field of the same places: coordinates differ by rounding alone.
+    assert!((printed / found - 1.0).abs() < 1e-9, "{printed} {found}");
+    // Nothing is overwritten.
+    ringsum(&folder)
+        .args(["arrange", "lid.toml", "--draw", "layouts.svg"])
+        .assert()
+        .code(2);
+}
+
+#[test]
+fn threads_change_no_digit() {
+    let folder = folder();
+    assert_eq!(
+        json(&folder, &["--jobs", "1"]),
+        json(&folder, &["--jobs", "3"])
+    );
+}
+
+/// Waits for a file that a process writes.
+#[cfg(unix)]
+fn waited_for(path: &Path, child: &mut std::process::Child) {
+    while !path.exists() {
+        assert!(
+            child.try_wait().expect("it can be asked").is_none(),
+            "it ended before"
+        );
+        std::thread::sleep(std::time::Duration::from_millis(2));
+    }
+}
+
+#[cfg(unix)]
+#[test]
+fn a_stopped_search_goes_on_to_the_same_answer() {
+    let folder = folder();
+    let whole = json(&folder, &[]);
+    let mut child = std::process::Command::new(cargo_bin!("ringsum"))
+        .args([
+            "arrange",
+            "lid.toml",
+            "--json",
+            "--solve",
+            "2",
+            "--checkpoint",
+            "state.json",
+        ])
+        .current_dir(folder.path())
+        .stdout(std::process::Stdio::piped())
+        .stderr(std::process::Stdio::piped())
+        .spawn()
+        .expect("the program starts");
+    let state = folder.path().join("state.json");
+    waited_for(&state, &mut child);
+    let stopped = std::process::Command::new("kill")
+        .args(["-INT", &child.id().to_string()])
+        .status()
+        .expect("kill is there");
+    assert!(stopped.success());
+    let ended = child.wait_with_output().expect("it ends");
+    assert_eq!(ended.status.code(), Some(130), "{}", text(&ended.stderr));
+    let part: serde_json::Value = serde_json::from_slice(&ended.stdout).expect("it is JSON");
+    assert!(part["complete"] == false, "{part}");
+    assert_eq!(json(&folder, &["--resume", "state.json"]), whole);
+    // A finished search is told again without work.
+    assert_eq!(json(&folder, &["--resume", "state.json"]), whole);
+    // Another joint, goal or seed is another search.
+    for other in [&["--seed", "2"][..], &["--for", "resistance"]] {
+        let assert = ringsum(&folder)
+            .args([
+                "arrange",
+                "lid.toml",
+                "--solve",
+                "2",
+                "--resume",
+                "state.json",
+            ])
+            .args(other)
+            .assert()
+            .code(2);
+        assert!(text(&assert.get_output().stderr).contains("belongs to another joint"));
+    }
+    let changed = JOINT.replace("3 mm", "4 mm");
+    fs::write(folder.path().join("lid.toml"), changed).expect("it can be written");
+    ringsum(&folder)
+        .args([
+            "arrange",
+            "lid.toml",
+            "--solve",
+            "2",
+            "--resume",
+            "state.json",
+        ])
+        .assert()
+        .code(2);
+    fs::write(&state, "{").expect("it can be written");
+    let assert = ringsum(&folder)
+        .args(["arrange", "lid.toml", "--resume", "state.json"])
+        .assert()
+        .code(2);
+    assert!(text(&assert.get_output().stderr).contains("is no checkpoint"));
+}
+
+#[test]
+fn what_cannot_be_searched_is_refused_with_the_way_out() {
+    for (from, to, told) in [
+        ("require = { rise = \"6 K\" }", "", "need a requirement"),
+        (
+            "torque = \"1.5 N·m\"",
+            "torque = \"9 N·m\"",
+            "no fastener bears its torque",
+        ),
+        (
+            "step = \"8 mm\"",
+            "edge_distance = \"30 mm\"",
+            "no layout keeps",
+        ),
+    ] {
+        let folder = tempdir().expect("there is a folder");
+        fs::write(folder.path().join("lid.toml"), JOINT.replace(from, to)).expect("written");
+        let assert = ringsum(&folder)
+            .args(["arrange", "lid.toml"])
+            .assert()
+            .code(2);
+        let stderr = text(&assert.get_output().stderr);
+        assert!(stderr.contains(told) && stderr.contains("help"), "{stderr}");
+    }
+}
