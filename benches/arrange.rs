@@ -1,7 +1,7 @@
 //! A search of layouts: the screening, the elastic field for the best, and how their ranks agree.
 //!
 //! `cargo bench --bench arrange` times 1000 screened and 20 solved layouts; `-- ranks 200` solves so
-//! many random ones and compares; RAYON_NUM_THREADS sets the threads.
+//! many random ones and compares; `RAYON_NUM_THREADS` sets the threads.
 
 #![allow(clippy::print_stdout, reason = "a bench shows its times")]
 

@@ -16,13 +16,13 @@ require = { rise = "6 K" }
 
 [[plate]]
 material = "Al 6061-T6"
-thickness = "3 mm"
+thickness = "5 mm"
 size = ["50 mm", "40 mm"]
 finish = "milled"
 
 [[plate]]
 material = "Al 6061-T6"
-thickness = "3 mm"
+thickness = "5 mm"
 size = ["50 mm", "40 mm"]
 finish = "milled"
 cooled = { film = "2000 W/(m²·K)" }
@@ -31,7 +31,9 @@ cooled = { film = "2000 W/(m²·K)" }
 thread = "M4"
 grade = "8.8"
 head = "socket"
-torque = "1 N·m"
+washer = "ISO 7089"
+nut_washer = "ISO 7089"
+torque = "2 N·m"
 at = [["10 mm", "10 mm"]] # a start
 
 [arrange]
@@ -195,7 +197,7 @@ fn a_stopped_search_goes_on_to_the_same_answer() {
             .code(2);
         assert!(text(&assert.get_output().stderr).contains("belongs to another joint"));
     }
-    let changed = JOINT.replace("3 mm", "4 mm");
+    let changed = JOINT.replace("5 mm", "6 mm");
     fs::write(folder.path().join("lid.toml"), changed).expect("it can be written");
     ringsum(&folder)
         .args([
@@ -221,7 +223,7 @@ fn what_cannot_be_searched_is_refused_with_the_way_out() {
     for (from, to, told) in [
         ("require = { rise = \"6 K\" }", "", "need a requirement"),
         (
-            "torque = \"1.5 N·m\"",
+            "torque = \"2 N·m\"",
             "torque = \"9 N·m\"",
             "no fastener bears its torque",
         ),

@@ -13,6 +13,7 @@ use crate::{
     },
     joint::Limit,
     layout::{Answer, Goal, Row, Verdict},
+    report::number::four,
 };
 
 const WIDTH: f64 = 620.0;
@@ -267,7 +268,7 @@ fn plans(sheet: &mut Sheet, top: f64, plot: &ArrangePlot) -> Result<f64, FigureE
         let text = Lettering::plain(LABEL - 1.0, INK, Anchor::Start);
         let lines = [
             format!("{} × {}", row.places.len(), row.label),
-            format!("{} K/W", axis::significant(row.value(), 4)),
+            format!("{} K/W", four(row.value())),
         ];
         for (line, words) in lines.iter().enumerate() {
             let y = upper + height + 13.0 + 13.0 * line as f64;

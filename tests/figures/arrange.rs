@@ -77,7 +77,7 @@ fn a_search_shows_limit_costs_and_the_plans_of_its_front() {
     let text = svg(&drawing()).unwrap();
     for part in [
         "source to sink, K/W",
-        ">bolts<",
+        "source to sink against bolts",
         "required",
         "≤ 0.2",
         "2 × M4 A2-70",
