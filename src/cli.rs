@@ -1,8 +1,10 @@
 //! Arguments, files and exit codes: the only input and output.
 
 mod arrange;
+mod batch;
 mod chain;
 mod check;
+mod compare;
 mod console;
 mod draw;
 mod drawings;
@@ -17,6 +19,7 @@ mod input;
 mod list;
 mod new;
 mod output;
+mod results;
 mod torque;
 
 use crate::cli::console::{Color, Console, Outcome, Trouble};
@@ -60,6 +63,7 @@ enum Command {
     New(new::New),
     Check(check::Check),
     Estimate(estimate::Estimate),
+    Compare(compare::Compare),
     Torque(torque::Torque),
     Drivers(drivers::Drivers),
     Draw(draw::Draw),
@@ -115,6 +119,7 @@ impl Command {
             Self::New(command) => command.run(console),
             Self::Check(command) => command.run(console),
             Self::Estimate(command) => command.run(console),
+            Self::Compare(command) => command.run(console),
             Self::Torque(command) => command.run(console),
             Self::Drivers(command) => command.run(console),
             Self::Draw(command) => command.run(console),

@@ -4,6 +4,7 @@ mod cautions;
 mod chain;
 mod choice;
 mod forces;
+mod loss;
 mod maps;
 mod results;
 mod surfaces;
@@ -15,6 +16,7 @@ pub(crate) use chain::LARGE_ERROR;
 pub use chain::{Chain, Conditions, DrawPlan, Drawn, ForceEnd, Meeting, State, Workspace};
 pub use choice::{Choice, Fineness, Watch};
 pub use forces::Strength;
+pub use loss::{Loss, worst_loss};
 pub use maps::{field_map, ring_tables};
 pub use results::*;
 pub use temperatures::{
@@ -27,7 +29,7 @@ pub use crate::resistance::RingRow;
 
 use crate::{
     diagnostic::Assumption,
-    joint::{CooledPart, Cooling, Fastener, Joint, Sink, Zone},
+    joint::{CooledPart, Cooling, Fastener, Joint, NotLeftOut, Sink, Zone},
     numerics::distribution::deviations,
     pressure,
     resistance::{self, Path},
@@ -212,6 +214,9 @@ pub enum Failure {
         /// Name of the case.
         case: &'static str,
     },
+    /// Bolts that cannot be left out.
+    #[error("{0}")]
+    NotLeftOut(#[from] NotLeftOut),
     /// A sweep asks for a group that is not there.
     #[error("there is no fastener group {asked}; the joint has {known}")]
     NoSuchGroup {

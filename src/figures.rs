@@ -3,6 +3,7 @@
 mod arrange;
 mod axis;
 mod clip;
+mod comparison;
 mod cumulative;
 mod fit;
 mod flags;
@@ -20,6 +21,7 @@ mod torque;
 mod warmth;
 
 pub use arrange::ArrangePlot;
+pub use comparison::{ComparisonPlot, ComparisonRow};
 pub use cumulative::{CumulativePlot, Curve, RadiusMark};
 pub use fit::{FitPlot, ProfilePlot};
 pub use plan::{
@@ -56,6 +58,8 @@ pub enum Drawing {
     Torque(TorqueSweep),
     /// Layouts of a search.
     Arrange(Box<ArrangePlot>),
+    /// Several joints side by side.
+    Comparison(Box<ComparisonPlot>),
     /// What each input alone does to an answer.
     Tornado(Box<Ranking>),
     /// Own readings with the law through them.
@@ -108,6 +112,7 @@ fn sheet(drawing: &Drawing) -> Result<sheet::Sheet, FigureError> {
         Drawing::Cumulative(plot) => cumulative::draw(plot),
         Drawing::Torque(sweep) => torque::draw(sweep),
         Drawing::Arrange(plot) => arrange::draw(plot),
+        Drawing::Comparison(plot) => comparison::draw(plot),
         Drawing::Tornado(ranking) => tornado::draw(ranking),
         Drawing::Fit(plot) => fit::draw(plot),
         Drawing::Profile(plot) => fit::draw_profile(plot),

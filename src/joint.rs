@@ -26,8 +26,10 @@ mod lands;
 mod limits;
 mod loads;
 mod maps;
+mod mass;
 mod materials;
 mod medium;
+mod missing;
 mod overrides;
 mod patches;
 mod patterns;
@@ -41,10 +43,13 @@ mod seats;
 mod service;
 mod stack;
 mod stacking;
+mod symmetry;
 mod syntax;
 mod tightening;
 mod tree;
 mod uncertainty;
+mod variants;
+mod versions;
 mod walk;
 mod zones;
 
@@ -64,8 +69,11 @@ use crate::{
 pub use checked::*;
 pub use finishes::slope_from_roughness;
 pub use maps::{Files, LONGEST_TABLE};
+pub use mass::Mass;
+pub use missing::NotLeftOut;
 pub use radiation::{RadiatingBack, STEFAN_BOLTZMANN, radiative_film};
 pub use schema::schema;
+pub use versions::{Version, read_version, read_versions, variant_names};
 
 /// Longest joint file, bytes.
 pub const LONGEST_FILE: usize = 1_000_000;
@@ -112,13 +120,7 @@ pub fn read_with(text: &str, sets: &[String]) -> Result<Joint, Faults> {
 /// the name as stated to the text, or to the reason why there is none. Faults in a table point
 /// into the table.
 pub fn read_with_files(text: &str, sets: &[String], files: &Files<'_>) -> Result<Joint, Faults> {
-    let start = text.len() + 1 + sets.iter().map(|set| set.len() + 1).sum::<usize>();
-    let mut tables = Tables::new(files, start);
-    let (joint, faults) = reading(text, sets, &mut tables);
-    match joint {
-        Some(joint) if faults.is_empty() => Ok(joint),
-        _ => Err(placed(text, sets, (tables.read, faults))),
-    }
+    versions::read_version(text, (sets, None), files)
 }
 
 /// Spans count through the file, then through the overrides and the tables, each after a line
@@ -150,7 +152,12 @@ fn placed(
     }
 }
 
-fn reading(text: &str, sets: &[String], tables: &mut Tables<'_>) -> (Option<Joint>, Vec<Fault>) {
+/// The joint of a file, or that of one of its variants, counted from 0.
+fn reading(
+    text: &str,
+    (sets, variant): (&[String], Option<usize>),
+    tables: &mut Tables<'_>,
+) -> (Option<Joint>, Vec<Fault>) {
     if text.len() > LONGEST_FILE {
         let told = fault(
             "file/too-large",
@@ -173,12 +180,17 @@ fn reading(text: &str, sets: &[String], tables: &mut Tables<'_>) -> (Option<Join
     let syntax = syntax::faults(&errors, text);
     let mut collector = Collector::default();
     let mut tree = Node::file(&table);
+    let variants = variants::taken(&mut tree, &mut collector);
+    let formed = collector.count();
+    if let Some(variant) = variant.and_then(|variant| variants.get(variant)) {
+        variant.apply((&mut tree, text), &mut collector);
+    }
     let mut start = text.len() + 1;
     for set in sets {
         overrides::apply(&mut tree, set, start, &mut collector);
         start += set.len() + 1;
     }
-    let overridden = collector.count() == 0;
+    let overridden = collector.count() == formed;
     let file = walk::file(&tree, &FILE, &mut collector);
     if let Some(told) = newer_format(&file) {
         return (None, vec![told]);
@@ -267,6 +279,8 @@ fn assembled(file: &Record, tables: &mut Tables<'_>, collector: &mut Collector) 
         fillers: fillers?,
         measured: measured?,
         losses: losses?,
+        cost: file.number("cost"),
+        missing: Vec::new(),
         arrange: arrange?,
         uncertain: uncertainty::stated(file, &names),
         bolts_scatter: bolts_scatter?,

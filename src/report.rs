@@ -3,6 +3,8 @@
 pub mod arrange;
 pub mod card;
 pub mod catalogue;
+pub mod comparison;
+pub mod csv;
 pub mod drivers;
 pub mod fit;
 pub mod json;

@@ -25,7 +25,7 @@ pub mod round;
 mod fixtures;
 
 pub use calibration::Calibration;
-pub use cells::{Cells, Plan, Site, cells};
+pub use cells::{Cells, Hole, Plan, Site, cells};
 pub use failure::Failure;
 pub use field::RingRow;
 pub use path::{Load, Path};

@@ -5,6 +5,7 @@
 //! lubricant) unless the file says otherwise: independent bolts average out.
 
 mod answer;
+mod comparison;
 mod draws;
 mod indices;
 mod inputs;
@@ -20,11 +21,13 @@ mod window;
 mod worst;
 
 pub use answer::Answer;
+pub use comparison::{Compared, Comparison, Contender, Sense, Verdict, comparison, side_by_side};
 pub use draws::{Draws, draws};
 pub use indices::{Bases, FEWEST_BASES, Index, Share, indices};
 pub use inputs::{Input, Moves, NUMERICAL, inputs};
 pub use media::{InMedium, in_media};
 pub use ranking::{Ranked, Ranking, RankingOptions, Scale, Target, ranking};
+pub(crate) use sweep::worst_case;
 pub use sweep::{CONFIDENCE, SweepOptions, sweep_along, torque_sweep};
 pub use verification::{Verification, verification};
 pub use window::{FIRST, LAST, NOTHING, REQUIREMENT};

@@ -1,5 +1,9 @@
 //! The command line: what it prints where, how it ends, what it leaves on disk.
 
+#[path = "cli/batch.rs"]
+mod batch;
+#[path = "cli/compare.rs"]
+mod compare;
 #[path = "cli/drivers.rs"]
 mod drivers;
 #[path = "cli/fields.rs"]
@@ -66,7 +70,8 @@ ringsum --help                 lists every command
 fn help_lists_the_commands_and_hides_those_for_packagers() {
     let help = stdout(&ringsum().arg("--help").assert().code(0).stderr_eq(""));
     for command in [
-        "new", "check", "estimate", "torque", "drivers", "draw", "fit", "list", "explain",
+        "new", "check", "estimate", "compare", "torque", "drivers", "draw", "fit", "list",
+        "explain",
     ] {
         assert!(
             help.contains(&format!("\n  {command}")),
@@ -88,6 +93,7 @@ fn every_command_has_help_and_usage_errors_go_to_standard_error() {
         "new",
         "check",
         "estimate",
+        "compare",
         "torque",
         "drivers",
         "draw",
@@ -110,7 +116,9 @@ fn every_command_has_help_and_usage_errors_go_to_standard_error() {
             .stdout_eq("");
         assert!(stderr(&wrong).contains("--nonsense"));
     }
-    for command in ["check", "estimate", "torque", "drivers", "draw", "fit"] {
+    for command in [
+        "check", "estimate", "compare", "torque", "drivers", "draw", "fit",
+    ] {
         ringsum().arg(command).assert().code(2).stdout_eq("");
     }
 }

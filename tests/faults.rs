@@ -49,7 +49,7 @@ fn table(name: &str) -> Result<String, String> {
 }
 
 fn faults(name: &str, text: &str) -> Faults {
-    joint::read_with_files(text, &sets(text), &table)
+    joint::read_versions(text, &sets(text), &table)
         .expect_err(&format!("{name}.toml must be refused"))
 }
 

@@ -2,6 +2,8 @@
 
 #[path = "figures/arrange.rs"]
 mod arrange;
+#[path = "figures/comparison.rs"]
+mod comparison;
 #[path = "figures/heat.rs"]
 mod heat;
 #[path = "figures/tornado.rs"]
@@ -255,6 +257,7 @@ fn every_drawing() -> Vec<Drawing> {
         heat::flux(),
         Drawing::Faces(Box::new(heat::faces(Some(22.0)))),
         Drawing::Section(Box::new(heat::section(Some(22.0)))),
+        Drawing::Comparison(Box::new(comparison::comparison())),
         Drawing::Tornado(Box::new(tornado::ranking())),
     ]
 }
@@ -516,6 +519,11 @@ fn hostile_titles_stay_text() {
                 pair.pressure.outlines[0].name = HOSTILE.into();
                 pair.gap.quantity = HOSTILE.repeat(9);
                 pair.gap.unit = HOSTILE.into();
+            }
+            Drawing::Comparison(plot) => {
+                plot.title = HOSTILE.repeat(40);
+                plot.rows[0].name = HOSTILE.repeat(9);
+                plot.rows[0].notes[0] = HOSTILE.into();
             }
             Drawing::Faces(pair) => {
                 pair.warm.title = HOSTILE.repeat(40);

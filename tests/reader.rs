@@ -14,6 +14,8 @@ mod plates;
 mod sandwich;
 #[path = "reader/stacks.rs"]
 mod stacks;
+#[path = "reader/variants.rs"]
+mod variants;
 
 use std::{fmt::Write, fs, path::PathBuf, time::Instant};
 

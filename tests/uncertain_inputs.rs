@@ -31,7 +31,8 @@ preload = "4 kN to 6 kN"
 at = [["15 mm", "15 mm"], ["65 mm", "15 mm"], ["15 mm", "65 mm"], ["65 mm", "65 mm"]]
 "#;
 
-const NO_LOSS: &str = "[losses]\nsettling = \"0 µm\"\nrelaxation = \"0 %\"\n";
+const NO_LOSS: &str =
+    "[losses]\nsettling = \"0 µm\"\nrelaxation = \"0 %\"\ninteraction = \"0 %\"\n";
 
 fn read(parts: &[&str]) -> Joint {
     joint::read(&parts.concat()).expect("the joint is whole")

@@ -197,6 +197,7 @@ fn ring_sum_agrees_with_adaptive_quadrature() {
         let plan = Plan {
             outlines: [(disc.clone(), [0.0; 2]), (disc, [0.0; 2])],
             thickness: [i.t1, i.t2],
+            empty: Vec::new(),
             sites: vec![Site {
                 at: [0.0; 2],
                 hole_radius: [i.a; 2],

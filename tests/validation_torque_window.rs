@@ -106,7 +106,7 @@ fn less_confidence_asks_for_less_torque() {
 
 #[test]
 fn strength_and_separation_end_where_a_fine_sweep_says() {
-    let joint = joint("1000 K", "600 N");
+    let joint = joint("1000 K", "300 N");
     let window = swept(&joint, 5, 0.9).window;
     let strength = window.strength.expect("both are known");
     let fine = swept(&joint, 201, 0.9);
@@ -118,15 +118,15 @@ fn strength_and_separation_end_where_a_fine_sweep_says() {
         .rfind(|point| point.passes)
         .expect("low torques pass");
     assert!((last.torque..=last.torque + step).contains(&strength.high.torque));
-    // The least force in service must carry 1.2 times what 600 N take from the faces: by hand from the
-    // force at assembly, whose low end rises in proportion to torque.
+    // The least force in service must carry 1.2 times what 300 N take from the faces.
     let separation = window
         .limits
         .iter()
         .find(|limit| limit.side == Side::Least)
         .expect("a load asks for force");
     assert!((separation.torque - strength.low.torque).abs() < 1e-12);
-    // 1.7 N·m clamps at least about 1.35 kN: 720 N and the losses need some 0.9 to 1.6 N·m.
+    // 1.7 N·m clamps at least about 1.75 kN at assembly, of which settling, relaxation and the other
+    // bolts take about 1 kN: 360 N and the losses need some 0.9 to 1.6 N·m.
     assert!((0.5..2.0).contains(&separation.torque), "{separation:?}");
     let Range { low, high } = window.both.expect("1000 K are met by any torque");
     assert_eq!(low, strength.low);
@@ -177,7 +177,10 @@ fn a_shut_window_tries_changes_one_at_a_time() {
     assert!(!window.plates_fail);
     let ratio = window.force_ratio.expect("heat asks for more force");
     assert!(ratio > 1.0);
-    assert_eq!(window.larger_thread.as_deref(), Some("M5"));
+    // Stress areas of ISO 898-1, mm²: M4 8.78, M5 14.2, M6 20.1.
+    let larger = if ratio <= 14.2 / 8.78 { "M5" } else { "M6" };
+    assert!(ratio < 20.1 / 8.78, "{ratio}");
+    assert_eq!(window.larger_thread.as_deref(), Some(larger));
     // Friction, tool, elongation, grade.
     assert_eq!(window.trials.len(), 4, "{:?}", window.trials);
     for trial in &window.trials {

@@ -12,7 +12,9 @@ use crate::{
     figures::{self, Drawing, Format},
     joint::{Joint, Medium},
     pressure::elastic::Failure as Contact,
-    uncertainty::{self, InMedium, Ranking, RankingOptions, SweepOptions, Verification},
+    uncertainty::{
+        self, Comparison, Contender, InMedium, Ranking, RankingOptions, SweepOptions, Verification,
+    },
     units::{self, Quantity},
 };
 
@@ -120,6 +122,73 @@ pub fn estimate(task: &Task, options: &Options, beside: &Beside) -> Result<Estim
             },
         })
     })
+}
+
+/// A joint without some of its bolts, by their numbers from 1.
+pub fn without(joint: &Joint, numbers: &[usize]) -> Result<Joint, Trouble> {
+    joint.without(numbers).map_err(|found| {
+        Trouble::usage(
+            found.to_string(),
+            "bolts are numbered as estimate prints them, group by group in file order",
+        )
+    })
+}
+
+/// One of several joints to compare.
+pub struct Entry {
+    /// What it is called.
+    pub name: String,
+    /// The joint.
+    pub joint: Joint,
+}
+
+/// Whether losses of single bolts are weighed.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Losses {
+    /// They are.
+    Weighed,
+    /// They are not.
+    Left,
+}
+
+/// Joints side by side, with the pressure of each for a figure of `columns` points, where asked for.
+pub fn compared(
+    entries: &[Entry],
+    (choice, watch): (Choice, &Watch),
+    (options, losses, columns): (&Options, Losses, Option<usize>),
+) -> Result<(Comparison, Vec<FieldMap>), Trouble> {
+    let failed = |entry: &Entry| {
+        let name = entry.name.clone();
+        move |failure: Failure| Trouble::from(failure).of_file(&name)
+    };
+    let chains = entries
+        .iter()
+        .map(|entry| Chain::of(&entry.joint, choice, watch).map_err(failed(entry)))
+        .collect::<Result<Vec<Chain>, Trouble>>()?;
+    let mut contenders = Vec::with_capacity(entries.len());
+    let mut maps = Vec::new();
+    for (entry, chain) in entries.iter().zip(&chains) {
+        let estimate = uncertainty::along(chain, options).map_err(failed(entry))?;
+        let loss = match losses {
+            Losses::Weighed => {
+                let case = uncertainty::worst_case(chain).map_err(failed(entry))?;
+                estimate::worst_loss(chain, choice, (case, watch)).map_err(failed(entry))?
+            }
+            Losses::Left => None,
+        };
+        if let Some(columns) = columns {
+            maps.push(estimate::field_map(chain, 0, columns).map_err(failed(entry))?);
+        }
+        contenders.push(Contender {
+            name: entry.name.clone(),
+            chain,
+            estimate,
+            loss,
+        });
+    }
+    let found = uncertainty::comparison(contenders, options)?;
+    watch.tell("");
+    Ok((found, maps))
 }
 
 /// The word of a medium from the command line, if a joint file would take it.

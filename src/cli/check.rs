@@ -2,12 +2,13 @@
 
 use crate::{
     cli::{
+        batch::Batch,
         console::{Console, Layout, Outcome, Trouble},
         input::{self, Source},
     },
     diagnostic::{Colour, Fault},
-    joint::{self, Faults, Joint},
-    report::listing,
+    joint::{self, Faults, Joint, Version},
+    report::{listing, number::plain},
 };
 use clap::Args;
 use std::{
@@ -27,35 +28,36 @@ pub struct Check {
     /// Print one JSON object per file
     #[arg(long)]
     json: bool,
+    #[command(flatten)]
+    batch: Batch,
 }
 
 impl Check {
     /// Checks every file, also after one at fault.
     pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
-        input::stdin_at_most_once(&self.files)?;
+        let files = self.batch.files(&self.files);
+        input::stdin_at_most_once(&files)?;
         let layout = Layout::of_batch(self.files.len());
-        let mut outcomes = Vec::new();
-        for path in &self.files {
-            outcomes.push(match read(path, &self.sets, console) {
-                Ok((source, _)) if self.json => {
-                    console.json(&listing::accepted(&source.name), layout)?;
-                    Outcome::Done
-                }
-                Ok((source, joint)) => {
-                    console.result(&accepted(&source.name, &joint))?;
-                    Outcome::Done
-                }
-                Err(refused) if self.json => {
-                    console.json(&refused.json(), layout)?;
-                    Outcome::Faulty
-                }
-                Err(refused) => {
-                    console.trouble(&refused.trouble());
-                    Outcome::Faulty
-                }
-            });
-        }
-        Ok(Outcome::of_batch(&outcomes))
+        self.batch
+            .run(
+                &files,
+                console,
+                &|_, path, console| match read_versions(path, &self.sets, console) {
+                    Ok((source, _)) if self.json => {
+                        console.json(&listing::accepted(&source.name), layout)?;
+                        Ok(Outcome::Done)
+                    }
+                    Ok((source, versions)) => {
+                        console.result(&accepted(&source.name, &versions))?;
+                        Ok(Outcome::Done)
+                    }
+                    Err(refused) if self.json => {
+                        console.json(&refused.json(), layout)?;
+                        Ok(Outcome::Faulty)
+                    }
+                    Err(refused) => Err(refused.trouble()),
+                },
+            )
     }
 }
 
@@ -77,9 +79,29 @@ impl Refused {
         }
     }
 
+    /// A file with faults, whose tables stand in its folder.
+    fn of(source: Source, mut faults: Faults, (folder, sets): (&Path, &[String])) -> Self {
+        // The file names its tables from its own folder; a message names them from here.
+        for (name, _) in faults.sources.iter_mut().skip(1 + sets.len()) {
+            *name = input::name(&folder.join(&*name));
+        }
+        Self {
+            name: source.name,
+            faults,
+        }
+    }
+
     /// The faults as JSON.
     pub fn json(&self) -> serde_json::Value {
         listing::faults(&self.name, &self.faults)
+    }
+
+    /// The first fault in one sentence.
+    pub fn first(&self) -> String {
+        let first = self.faults.faults.first();
+        first.map_or_else(String::new, |(_, fault)| {
+            format!("{}: {}", fault.code, fault.message)
+        })
     }
 
     /// The faults drawn into the text they are in. Colour is always there; the console strips it.
@@ -94,39 +116,104 @@ impl Refused {
     }
 }
 
-/// Reads one joint with its overrides.
+/// Reads one joint with its overrides; variants of it are left aside, which is told.
 pub fn read(
     path: &Path,
     sets: &[String],
     console: &mut Console,
 ) -> Result<(Source, Joint), Refused> {
-    if input::waits_for_keyboard(path) {
-        console.message("reading a joint from the keyboard; end it with Ctrl-D\n");
-    }
-    let source = input::read(path).map_err(|fault| Refused::unread(path, fault))?;
-    let folder = input::folder(path);
-    match joint::read_with_files(&source.text, sets, &|name| input::table(&folder, name)) {
-        Ok(joint) => Ok((source, joint)),
-        Err(mut faults) => {
-            // The file names its tables from its own folder; a message names them from here.
-            for (name, _) in faults.sources.iter_mut().skip(1 + sets.len()) {
-                *name = input::name(&folder.join(&*name));
+    read_variant(path, (sets, None), console)
+}
+
+/// Reads one joint, or a variant of it by its name, with overrides.
+pub fn read_variant(
+    path: &Path,
+    (sets, variant): (&[String], Option<&str>),
+    console: &mut Console,
+) -> Result<(Source, Joint), Refused> {
+    let source = text(path, console)?;
+    let names = joint::variant_names(&source.text);
+    let place = match variant {
+        None => {
+            if !names.is_empty() {
+                let count = names.len();
+                console.message(&format!(
+                    "{}: {count} variant{} left aside; ringsum compare reads them, --variant of estimate takes one\n",
+                    source.name,
+                    if count == 1 { "" } else { "s" },
+                ));
             }
-            Err(Refused {
-                name: source.name,
-                faults,
-            })
+            None
         }
+        Some(name) => Some(
+            names
+                .iter()
+                .position(|known| known == name)
+                .ok_or_else(|| Refused::unread(path, no_variant(name, (path, &names))))?,
+        ),
+    };
+    let folder = input::folder(path);
+    let read = joint::read_version(&source.text, (sets, place), &|name| {
+        input::table(&folder, name)
+    });
+    match read {
+        Ok(joint) => Ok((source, joint)),
+        Err(faults) => Err(Refused::of(source, faults, (&folder, sets))),
     }
 }
 
-fn accepted(name: &str, joint: &Joint) -> String {
-    let bolts = joint.bolts().count();
-    let assumed = joint.assumptions.len();
-    format!(
-        "{name}: ok, {} plates, {bolts} bolt{}, {assumed} assumption{}\n",
-        joint.plates.len(),
-        if bolts == 1 { "" } else { "s" },
-        if assumed == 1 { "" } else { "s" },
-    )
+/// Reads one joint and all its variants, with overrides.
+pub fn read_versions(
+    path: &Path,
+    sets: &[String],
+    console: &mut Console,
+) -> Result<(Source, Vec<Version>), Refused> {
+    let source = text(path, console)?;
+    let folder = input::folder(path);
+    match joint::read_versions(&source.text, sets, &|name| input::table(&folder, name)) {
+        Ok(versions) => Ok((source, versions)),
+        Err(faults) => Err(Refused::of(source, faults, (&folder, sets))),
+    }
+}
+
+fn text(path: &Path, console: &mut Console) -> Result<Source, Refused> {
+    if input::waits_for_keyboard(path) {
+        console.message("reading a joint from the keyboard; end it with Ctrl-D\n");
+    }
+    input::read(path).map_err(|fault| Refused::unread(path, fault))
+}
+
+/// A variant that the file does not have.
+fn no_variant(name: &str, (path, names): (&Path, &[String])) -> Fault {
+    let file = input::name(path);
+    Fault {
+        code: "name/unknown",
+        message: format!("`{file}` has no variant `{}`", plain(name)),
+        span: 0..0,
+        expected: String::new(),
+        help: Some(if names.is_empty() {
+            "it has no variants: add a `[[variant]]` with its name".to_owned()
+        } else {
+            format!("its variants are {}", plain(&names.join(", ")))
+        }),
+    }
+}
+
+fn accepted(name: &str, versions: &[Version]) -> String {
+    let Some(Version { joint, .. }) = versions.first() else {
+        return String::new();
+    };
+    let several = |count: usize, what: &str| {
+        let ending = if count == 1 { "" } else { "s" };
+        format!("{count} {what}{ending}")
+    };
+    let mut parts = vec![
+        format!("{} plates", joint.plates.len()),
+        several(joint.bolts().count(), "bolt"),
+        several(joint.assumptions.len(), "assumption"),
+    ];
+    if versions.len() > 1 {
+        parts.push(several(versions.len() - 1, "variant"));
+    }
+    format!("{name}: ok, {}\n", parts.join(", "))
 }

@@ -129,6 +129,18 @@ impl Trouble {
         }
     }
 
+    /// The same, with the file it speaks of.
+    pub fn of_file(self, name: &str) -> Self {
+        match self {
+            Self::Failure(message) => Self::Failure(format!("{name}: {message}")),
+            Self::Usage { message, help } => Self::Usage {
+                message: format!("{name}: {message}"),
+                help,
+            },
+            other => other,
+        }
+    }
+
     /// How the run ends because of it.
     pub fn outcome(&self) -> Outcome {
         match self {
@@ -140,25 +152,77 @@ impl Trouble {
 
 /// Standard output for results, standard error for messages; colour is stripped where it does
 /// not belong.
-pub struct Console {
+pub struct Console(To);
+
+/// Where it goes.
+enum To {
+    /// To those who wait for it.
+    Streams(Box<Streams>),
+    /// Kept until its turn comes.
+    Kept(Vec<(Stream, String)>),
+}
+
+struct Streams {
     results: AutoStream<io::Stdout>,
     messages: AutoStream<io::Stderr>,
+}
+
+/// What a text is.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+enum Stream {
+    Result,
+    Message,
 }
 
 impl Console {
     /// The console with the colour asked for.
     pub fn new(color: Color) -> Self {
         color.choice().write_global();
-        Self {
+        Self(To::Streams(Box::new(Streams {
             results: AutoStream::auto(io::stdout()),
             messages: AutoStream::auto(io::stderr()),
+        })))
+    }
+
+    /// A console that keeps all it is given, for work that goes on beside other work.
+    pub fn kept() -> Self {
+        Self(To::Kept(Vec::new()))
+    }
+
+    /// All that was kept, for tests.
+    #[cfg(test)]
+    pub fn texts(self) -> String {
+        match self.0 {
+            To::Kept(texts) => texts.into_iter().map(|(_, text)| text).collect(),
+            To::Streams(_) => String::new(),
         }
+    }
+
+    /// Gives out what another console has kept, in its order.
+    pub fn give_out(&mut self, kept: Self) -> io::Result<()> {
+        if let To::Kept(texts) = kept.0 {
+            for (stream, text) in texts {
+                match stream {
+                    Stream::Result => self.result(&text)?,
+                    Stream::Message => self.message(&text),
+                }
+            }
+        }
+        Ok(())
     }
 
     /// Writes a result.
     pub fn result(&mut self, text: &str) -> io::Result<()> {
-        self.results.write_all(text.as_bytes())?;
-        self.results.flush()
+        match &mut self.0 {
+            To::Streams(streams) => {
+                streams.results.write_all(text.as_bytes())?;
+                streams.results.flush()
+            }
+            To::Kept(texts) => {
+                texts.push((Stream::Result, text.to_owned()));
+                Ok(())
+            }
+        }
     }
 
     /// Writes a JSON value, indented for one file, on one line in a batch.
@@ -172,8 +236,13 @@ impl Console {
 
     /// Writes a message. When nobody can read it any more there is nobody left to tell.
     pub fn message(&mut self, text: &str) {
-        let _ = self.messages.write_all(text.as_bytes());
-        let _ = self.messages.flush();
+        match &mut self.0 {
+            To::Streams(streams) => {
+                let _ = streams.messages.write_all(text.as_bytes());
+                let _ = streams.messages.flush();
+            }
+            To::Kept(texts) => texts.push((Stream::Message, text.to_owned())),
+        }
     }
 
     /// Tells what went wrong, and the way out.

@@ -33,18 +33,7 @@ pub const NAMES: [&str; 7] = [
 /// shows its gap beside the pressure, and what heat does.
 pub fn of_joint(joint: &Joint, fields: &Fields) -> Vec<(&'static str, Drawing)> {
     let (nominal, field) = (&fields.nominal, &fields.map);
-    let furnish = |map: PlanMap| PlanMap {
-        outlines: joint.plates.iter().map(outline).collect(),
-        bolts: bolts(joint, nominal, field),
-        heated: joint
-            .source
-            .zones()
-            .into_iter()
-            .filter_map(|(zone, _)| heated(zone))
-            .collect(),
-        details: joint.plates.iter().flat_map(details).collect(),
-        ..map
-    };
+    let furnish = |map: PlanMap| furnished(map, joint, (nominal, field));
     let title = title(joint, fields.interface);
     let pressure = match PlanPair::of(&title, field) {
         Some(pair) => (
@@ -87,6 +76,31 @@ pub fn of_joint(joint: &Joint, fields: &Fields) -> Vec<(&'static str, Drawing)> 
         drawings.push((SECTION, Drawing::Section(Box::new(plot))));
     }
     drawings
+}
+
+/// A map with plates, bolts and heated zones of its joint.
+fn furnished(map: PlanMap, joint: &Joint, (nominal, field): (&Estimate, &FieldMap)) -> PlanMap {
+    PlanMap {
+        outlines: joint.plates.iter().map(outline).collect(),
+        bolts: bolts(joint, nominal, field),
+        heated: joint
+            .source
+            .zones()
+            .into_iter()
+            .filter_map(|(zone, _)| heated(zone))
+            .collect(),
+        details: joint.plates.iter().flat_map(details).collect(),
+        ..map
+    }
+}
+
+/// The pressure of a joint, for a map beside others.
+pub fn pressure(joint: &Joint, nominal: &Estimate, field: &FieldMap) -> PlanMap {
+    furnished(
+        PlanMap::pressure(&joint.title, field),
+        joint,
+        (nominal, field),
+    )
 }
 
 /// The title of the joint; of a stack with the interface that is drawn.

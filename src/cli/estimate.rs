@@ -2,14 +2,19 @@
 
 use crate::{
     cli::{
+        batch::Batch,
         chain::{self, Beside, Estimated, Rings, Task},
         check,
         console::{Console, Layout, Outcome, Trouble},
         draws::Draws,
-        field::{self, Field},
+        field::Field,
         input,
+        output::Existing,
+        results::Results,
     },
+    joint::Joint,
     report::{
+        csv::{self, Ended},
         json, media,
         text::{self, Detail},
     },
@@ -21,7 +26,9 @@ const EXAMPLES: &str = "\
 Examples:
   ringsum estimate joint.toml
   ringsum estimate joint.toml --set 'fastener.torque.value=\"2 N·m\"'
-  ringsum estimate joints/*.toml --json --strict";
+  ringsum estimate joints/*.toml --json --strict
+  ringsum estimate joint.toml --without 3
+  ringsum estimate joints/*.toml --jobs 4 --out results";
 
 /// Thermal resistance of joints: low, nominal and high, with the planes of every number
 #[derive(Debug, Args)]
@@ -66,52 +73,105 @@ pub struct Estimate {
     /// Exit with 3 when a caution speaks of this joint
     #[arg(long)]
     strict: bool,
+    /// Take a variant of the joint by its name
+    #[arg(long, value_name = "NAME")]
+    variant: Option<String>,
+    /// Leave bolts out, by their numbers: 3 or 3,4; their holes stay
+    #[arg(long, value_name = "N", value_delimiter = ',')]
+    without: Vec<usize>,
+    #[command(flatten)]
+    batch: Batch,
+    /// Write one JSON per file and one table, estimates.csv, to a folder instead of printing
+    #[arg(long, value_name = "DIR", conflicts_with_all = ["json", "brief", "full"])]
+    out: Option<PathBuf>,
+    /// Replace results that exist
+    #[arg(long, requires = "out")]
+    force: bool,
 }
 
 impl Estimate {
     /// Estimates every file, also after one at fault.
     pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
-        input::stdin_at_most_once(&self.files)?;
+        let files = self.batch.files(&self.files);
+        input::stdin_at_most_once(&files)?;
         if let Some(twice) = chain::twice(&self.media) {
             return Err(Trouble::usage(
                 format!("`{twice}` is named twice in --media"),
                 "name each medium once",
             ));
         }
-        let mut outcomes = Vec::new();
-        for (index, path) in self.files.iter().enumerate() {
-            if !self.json && self.files.len() > 1 {
+        let out = match &self.out {
+            Some(folder) => {
+                let existing = Existing::from_force(self.force);
+                Some(Results::new(folder, &files, (existing, self.batch.part()))?)
+            }
+            None => None,
+        };
+        let outcome = self.batch.run(&files, console, &|index, path, console| {
+            if !self.json && out.is_none() && self.files.len() > 1 {
                 let gap = if index > 0 { "\n" } else { "" };
                 console.result(&format!("{gap}{}:\n", input::name(path)))?;
             }
-            outcomes.push(match self.one(path, console) {
-                Ok(outcome) => outcome,
-                Err(Trouble::Output(fault)) => return Err(Trouble::Output(fault)),
-                Err(trouble) => {
-                    console.trouble(&trouble);
-                    trouble.outcome()
-                }
-            });
+            self.one(path, (index, out.as_ref()), console)
+        })?;
+        if let Some(out) = out {
+            console.message(&out.finish()?);
         }
-        Ok(Outcome::of_batch(&outcomes))
+        Ok(outcome)
     }
 
-    fn one(&self, path: &Path, console: &mut Console) -> Result<Outcome, Trouble> {
-        let layout = Layout::of_batch(self.files.len());
-        let (source, joint) = match check::read(path, &self.sets, console) {
-            Ok(read) => read,
+    fn one(
+        &self,
+        path: &Path,
+        (index, out): (usize, Option<&Results>),
+        console: &mut Console,
+    ) -> Result<Outcome, Trouble> {
+        let variant = self.variant.as_deref();
+        let (name, joint) = match check::read_variant(path, (&self.sets, variant), console) {
+            Ok((source, joint)) => (source.name, joint),
             Err(refused) => {
-                if self.json {
-                    console.json(&refused.json(), layout)?;
-                }
+                let row = csv::without(&input::name(path), Ended::Faulty, &refused.first());
+                self.put(&refused.json(), (index, out, row), console)?;
                 return Err(refused.trouble());
             }
         };
-        let options = self.draws.options();
+        let found = self.found(&joint);
+        match found {
+            Ok(found) => {
+                let caution = self.strict && found.estimate.has_cautions();
+                if self.json || out.is_some() {
+                    let rows = csv::rows(&name, &found.estimate, &joint.mass());
+                    self.put(&self.object(&name, &found), (index, out, rows), console)?;
+                } else {
+                    console.result(&self.text(&found))?;
+                }
+                Ok(if caution {
+                    Outcome::Cautioned
+                } else {
+                    Outcome::Done
+                })
+            }
+            Err(trouble) => {
+                let (message, ended) = match &trouble {
+                    Trouble::Failure(message) => (message.clone(), Ended::Failed),
+                    Trouble::Usage { message, .. } => (message.clone(), Ended::Faulty),
+                    Trouble::Output(_) | Trouble::Faults(_) => return Err(trouble),
+                };
+                let object = serde_json::json!({ "file": name, "ok": false, "failure": message });
+                let row = csv::without(&name, ended, &message);
+                self.put(&object, (index, out, row), console)?;
+                Err(trouble.of_file(&name))
+            }
+        }
+    }
+
+    /// The estimate of a joint and what was asked for beside it.
+    fn found(&self, joint: &Joint) -> Result<Estimated, Trouble> {
+        let joint = chain::without(joint, &self.without)?;
         let task = Task {
             joint: &joint,
             choice: self.field.choice()?,
-            watch: field::watch(),
+            watch: self.batch.watch(),
         };
         let rings = if self.rings {
             Rings::Told(chain::interface(&joint, self.interface)?)
@@ -124,57 +184,44 @@ impl Estimate {
             media: &media,
             verify: self.verify,
         };
-        match chain::estimate(&task, &options, &beside) {
-            Ok(found) => {
-                self.tell(&source.name, &found, console)?;
-                Ok(if self.strict && found.estimate.has_cautions() {
-                    Outcome::Cautioned
-                } else {
-                    Outcome::Done
-                })
-            }
-            Err(Trouble::Failure(message)) => {
-                if self.json {
-                    let object = serde_json::json!({
-                        "file": source.name, "ok": false, "failure": message,
-                    });
-                    console.json(&object, layout)?;
-                }
-                Err(Trouble::Failure(format!("{}: {message}", source.name)))
-            }
-            Err(Trouble::Usage { message, help }) => {
-                if self.json {
-                    let object = serde_json::json!({
-                        "file": source.name, "ok": false, "failure": message,
-                    });
-                    console.json(&object, layout)?;
-                }
-                Err(Trouble::Usage {
-                    message: format!("{}: {message}", source.name),
-                    help,
-                })
-            }
-            Err(trouble) => Err(trouble),
-        }
+        chain::estimate(&task, &self.draws.options(), &beside)
     }
 
-    fn tell(&self, name: &str, found: &Estimated, console: &mut Console) -> Result<(), Trouble> {
-        let (estimate, rings) = (&found.estimate, &found.rings);
-        if self.json {
-            let mut object = json::estimate(estimate);
-            object["file"] = name.into();
-            if self.rings {
-                object["rings"] = json::rings(rings);
-            }
-            if !self.media.is_empty() {
-                object["media"] = json::media(&found.media);
-            }
-            if self.verify > 0 {
-                object["verification"] = json::verification(found.verified.as_ref());
-            }
-            console.json(&object, Layout::of_batch(self.files.len()))?;
-            return Ok(());
+    /// Writes an object where results go to files, prints it where JSON is asked for.
+    fn put(
+        &self,
+        object: &serde_json::Value,
+        (index, out, rows): (usize, Option<&Results>, String),
+        console: &mut Console,
+    ) -> Result<(), Trouble> {
+        if let Some(out) = out {
+            out.put(index, object, rows)?;
+        } else if self.json {
+            console.json(object, Layout::of_batch(self.files.len()))?;
         }
+        Ok(())
+    }
+
+    fn object(&self, name: &str, found: &Estimated) -> serde_json::Value {
+        let mut object = json::estimate(&found.estimate);
+        object["file"] = name.into();
+        if let Some(variant) = &self.variant {
+            object["variant"] = variant.as_str().into();
+        }
+        if self.rings {
+            object["rings"] = json::rings(&found.rings);
+        }
+        if !self.media.is_empty() {
+            object["media"] = json::media(&found.media);
+        }
+        if self.verify > 0 {
+            object["verification"] = json::verification(found.verified.as_ref());
+        }
+        object
+    }
+
+    fn text(&self, found: &Estimated) -> String {
+        let (estimate, rings) = (&found.estimate, &found.rings);
         let detail = match (self.brief, self.full) {
             (true, _) => Detail::Brief,
             (false, true) => Detail::Full,
@@ -190,7 +237,6 @@ impl Estimate {
         }
         report.push_str(&text::rings(rings));
         report.push_str(&text::ring_sum(estimate, rings));
-        console.result(&report)?;
-        Ok(())
+        report
     }
 }

@@ -206,6 +206,25 @@ impl<'a> Chain<'a> {
         self.with(joint)
     }
 
+    /// The same joint without some bolts, by their numbers from 1; on a solved field grid and plates
+    /// are shared.
+    pub fn without(&self, numbers: &[usize]) -> Result<Chain<'static>, Failure> {
+        let joint = self.joint().without(numbers)?;
+        let mut chain = Chain {
+            joint: Cow::Owned(joint),
+            groups: self.groups.clone(),
+            group_of: self.group_of.clone(),
+            model: self.model.clone(),
+            error: Arc::default(),
+        };
+        chain.model = match &self.model {
+            Model::Cone(_) => Model::Cone(ConeModel::new(chain.joint())?),
+            Model::Elastic(model) => Model::Elastic(Box::new(model.afresh())),
+        };
+        chain.model = chain.levelled()?;
+        Ok(chain)
+    }
+
     /// The same plates and places in another joint.
     fn with(&self, joint: Joint) -> Result<Chain<'static>, Failure> {
         let mut chain = Chain {
@@ -318,7 +337,21 @@ impl<'a> Chain<'a> {
             .zip(&self.groups)
             .map(|(fastener, group)| group.service_force((joint, fastener), None, (case, &at)))
             .collect();
-        self.group_of.iter().map(|group| by_group[*group]).collect()
+        self.of_bolts(&by_group)
+    }
+
+    /// Values of the groups bolt by bolt; nothing where a bolt is missing.
+    pub(super) fn of_bolts(&self, by_group: &[f64]) -> Vec<f64> {
+        let mut found: Vec<f64> = self.group_of.iter().map(|group| by_group[*group]).collect();
+        self.vacate(&mut found);
+        found
+    }
+
+    /// Leaves nothing of the values of missing bolts.
+    pub(super) fn vacate(&self, values: &mut [f64]) {
+        for bolt in &self.joint.missing {
+            values[*bolt] = 0.0;
+        }
     }
 
     /// A failure of the networks in one case.
@@ -331,17 +364,25 @@ impl<'a> Chain<'a> {
 
     /// Refuses a case in which a bolt no longer clamps.
     pub(super) fn refuse_open(&self, case: usize, forces: &[f64]) -> Result<(), Failure> {
-        if forces.iter().any(|force| *force <= 0.0) {
+        if self.open_bolts(forces) > 0 {
             return Err(self.open(case, forces));
         }
         Ok(())
     }
 
+    /// Number of bolts that are there and no longer clamp.
+    fn open_bolts(&self, forces: &[f64]) -> usize {
+        let bolts = forces.iter().enumerate();
+        bolts
+            .filter(|(bolt, force)| **force <= 0.0 && !self.joint.is_missing(*bolt))
+            .count()
+    }
+
     /// The failure of a case in which bolts no longer clamp.
     pub(super) fn open(&self, case: usize, forces: &[f64]) -> Failure {
         Failure::Open {
-            bolts: forces.iter().filter(|force| **force <= 0.0).count(),
-            of: forces.len(),
+            bolts: self.open_bolts(forces),
+            of: self.joint().clamping(),
             case: self.joint().service.cases[case].name,
         }
     }
@@ -356,10 +397,8 @@ impl<'a> Chain<'a> {
             .map(|(fastener, group)| group.service_band(self.joint(), fastener, case))
             .collect();
         let ends = |of: &dyn Fn(&Band) -> f64| -> Vec<f64> {
-            self.group_of
-                .iter()
-                .map(|group| of(&bands[*group]))
-                .collect()
+            let by_group: Vec<f64> = bands.iter().map(of).collect();
+            self.of_bolts(&by_group)
         };
         [
             ends(&|band| band.low.unwrap_or(band.nominal).min(band.nominal)),
@@ -377,10 +416,14 @@ impl<'a> Chain<'a> {
             .bolts()
             .enumerate()
             .map(|(bolt, (fastener, at))| {
+                if self.joint.is_missing(bolt) {
+                    return BoltResult::missing(at);
+                }
                 let group = &self.groups[self.group_of[bolt]];
                 let strength = &strengths[self.group_of[bolt]];
                 BoltResult {
                     at,
+                    missing: false,
                     force: forces::assembly_band(fastener),
                     force_in_service: group.service_band(self.joint(), fastener, case),
                     axial: group.shared(self.joint(), fastener, case),
@@ -388,7 +431,7 @@ impl<'a> Chain<'a> {
                     use_in_service: strength.in_service,
                     largest_torque: strength.largest_torque.map(|(torque, _)| torque),
                     contact_radius: match &self.model {
-                        Model::Cone(model) => model.cones()[bolt].contact_radius,
+                        Model::Cone(model) => model.contact_radius(bolt),
                         Model::Elastic(model) => model.contact_radius(self, (case, bolt)),
                     },
                     contact_conductance: state.path.contact_per_bolt[bolt],
@@ -439,7 +482,8 @@ impl<'a> Chain<'a> {
     pub fn met_in(&self, interface: usize, point: [f64; 2], state: &State) -> Option<Meeting> {
         match &self.model {
             Model::Cone(model) => {
-                let pressure = model.cells().pressure_at(point, &state.conditions.forces)?;
+                let forces = model.clamping(&state.conditions.forces);
+                let pressure = model.cells().pressure_at(point, &forces)?;
                 Some(Meeting {
                     pressure,
                     gap: None,
@@ -457,7 +501,7 @@ impl<'a> Chain<'a> {
     /// The same in any interface, counted from the warm side; the cone has one.
     pub fn rings_in(&self, interface: usize, bolt: usize, state: &State) -> Vec<RingRow> {
         match &self.model {
-            Model::Cone(model) => model.cells().rings(&state.conditions.load(), bolt),
+            Model::Cone(model) => model.rings(&state.conditions, bolt),
             Model::Elastic(model) => model.rings(self, (bolt, interface)),
         }
     }

@@ -83,6 +83,8 @@ pub struct Results {
 pub struct BoltResult {
     /// Place in joint coordinates, m.
     pub at: [f64; 2],
+    /// Whether it is left out, so that its hole alone is there.
+    pub missing: bool,
     /// Clamp force at assembly, N.
     pub force: Band,
     /// Clamp force after losses, N.
@@ -99,6 +101,29 @@ pub struct BoltResult {
     pub contact_radius: f64,
     /// Ring sum of this bolt at nominal, W/K.
     pub contact_conductance: f64,
+}
+
+impl BoltResult {
+    /// A bolt that is left out: nothing clamps and nothing conducts.
+    pub(crate) fn missing(at: [f64; 2]) -> Self {
+        let none = Band {
+            low: Some(0.0),
+            nominal: 0.0,
+            high: Some(0.0),
+        };
+        Self {
+            at,
+            missing: true,
+            force: none,
+            force_in_service: none,
+            axial: None,
+            strength_use: None,
+            use_in_service: None,
+            largest_torque: None,
+            contact_radius: 0.0,
+            contact_conductance: 0.0,
+        }
+    }
 }
 
 /// The pressure between the faces at nominal force.

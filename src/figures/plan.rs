@@ -21,6 +21,7 @@ mod pair;
 mod parts;
 mod raster;
 mod shapes;
+pub(super) mod small;
 
 pub use faces::FacePair;
 pub(super) use faces::draw as draw_faces;

@@ -51,6 +51,10 @@ pub struct Joint {
     pub measured: Option<Measured>,
     /// Losses of clamp force asked for; without them losses act on the low force only.
     pub losses: Option<Losses>,
+    /// What the joint costs by the user's own measure.
+    pub cost: Option<f64>,
+    /// Bolts that are left out, counted from 0 in file order, rising; their holes stay.
+    pub missing: Vec<usize>,
     /// What a search of layouts may try; none where the file says nothing of it.
     pub arrange: Option<Arrange>,
     /// Values that the file states with a spread of their own.
@@ -172,6 +176,8 @@ pub struct Fastener {
     pub washer_thickness: f64,
     /// Number of washers in the grip; each adds a contact that settles.
     pub washers: u32,
+    /// What head, nut and washers are made of, by volume.
+    pub hardware: Hardware,
     /// Whether the head is a cylinder (socket head) rather than a hexagon.
     pub cylindrical_head: bool,
     /// How the far end holds.
@@ -196,6 +202,17 @@ pub struct Fastener {
     pub insert_hold: InsertHold,
     /// Places in joint coordinates, m.
     pub places: Vec<[f64; 2]>,
+}
+
+/// Volumes of the parts of one bolt, m³; none where the catalogue has no size.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Hardware {
+    /// Head.
+    pub head: Option<f64>,
+    /// Nut with its height, m; none for a thread in the plate.
+    pub nut: Option<(f64, f64)>,
+    /// All washers of the bolt's own material.
+    pub washers: Option<f64>,
 }
 
 /// Isolating washers of a bolt, all alike.

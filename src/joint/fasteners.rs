@@ -133,6 +133,7 @@ fn group(
             hole_radius: seated.holes[..plates.len()].to_vec(),
             washer_thickness: seated.seats.washer_thickness,
             washers: seated.seats.washers,
+            hardware: seated.seats.hardware,
             cylindrical_head: seated.seats.cylindrical,
             engagement: seated.engagement,
             flange: seated.flange,

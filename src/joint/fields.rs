@@ -86,6 +86,8 @@ pub enum Kind {
     Table(&'static Section),
     /// Tables that may stand more than once.
     List(&'static Section),
+    /// Tables of overrides, each with a name.
+    Variants,
 }
 
 /// What a single value of a spread is.
@@ -233,6 +235,7 @@ impl Kind {
                 None => "a table in braces".into(),
             },
             Self::List(section) => format!("tables headed `[[{}]]`", section.name),
+            Self::Variants => "tables headed `[[variant]]`".into(),
         }
     }
 }

@@ -26,23 +26,31 @@ pub(super) fn apply(tree: &mut Node, text: &str, shift: usize, collector: &mut C
     let steps = match steps(&text[..equals], shift) {
         Ok(steps) => steps,
         Err(span) => {
-            collector.report(
-                fault(CODE, &span, "this path cannot be read")
-                    .expecting("expected keys joined by dots")
-                    .help(EXAMPLE),
-            );
+            collector.report(unreadable(&span));
             return;
         }
     };
     let written = &text[equals + 1..];
     let start = shift + equals + 1 + (written.len() - written.trim_start().len());
-    let value = Written {
+    let value = Given::Written {
         text: written.trim(),
         start,
     };
-    if let Err(told) = set_in(tree, &FILE, &steps, value) {
+    if let Err(told) = set(tree, &steps, value) {
         collector.report(*told);
     }
+}
+
+/// Sets a field of the file by its path.
+pub(super) fn set(file: &mut Node, path: &[Step], value: Given<'_>) -> Told {
+    set_in(file, &FILE, path, value)
+}
+
+/// A path that cannot be read.
+pub(super) fn unreadable(span: &Span) -> Fault {
+    fault(CODE, span, "this path cannot be read")
+        .expecting("expected keys joined by dots")
+        .help(EXAMPLE)
 }
 
 const CODE: &str = "set/bad-override";
@@ -73,36 +81,43 @@ fn excludes(key: &str, other: &str) -> bool {
 }
 
 /// A step of a path.
-#[derive(Debug)]
-struct Step {
+#[derive(Clone, Debug)]
+pub(super) struct Step {
     span: Span,
     name: String,
     /// `[2]` is 2: counted from one.
     index: Option<usize>,
 }
 
-/// The value as written.
+/// The value.
 #[derive(Clone, Copy, Debug)]
-struct Written<'t> {
-    text: &'t str,
-    start: usize,
+pub(super) enum Given<'t> {
+    /// As written on the command line, from a place on.
+    Written {
+        /// What is written.
+        text: &'t str,
+        /// The byte it starts at.
+        start: usize,
+    },
+    /// As read from the file.
+    Read(&'t Node),
 }
 
-impl Written<'_> {
-    fn span(self) -> Span {
-        self.start..self.start + self.text.len()
-    }
-
+impl Given<'_> {
     /// The value as TOML, or as text when it is bare text such as `6 mm`; a field that takes
     /// text takes a bare number as text too, so that `grade=8.8` is a grade.
     fn node(self, kind: Kind) -> Node {
-        let as_text = || Node {
-            span: self.span(),
-            form: Form::Text(self.text.to_owned()),
+        let (text, start) = match self {
+            Self::Written { text, start } => (text, start),
+            Self::Read(node) => return node.clone(),
         };
-        match DeValue::parse(self.text) {
+        let as_text = || Node {
+            span: start..start + text.len(),
+            form: Form::Text(text.to_owned()),
+        };
+        match DeValue::parse(text) {
             Ok(value) => {
-                let node = Node::value(&value, self.start);
+                let node = Node::value(&value, start);
                 let wants_text = matches!(
                     kind,
                     Kind::Text | Kind::Name(_) | Kind::Choice(_) | Kind::Choices(_)
@@ -118,13 +133,13 @@ impl Written<'_> {
     }
 }
 
-type Told = Result<(), Box<Fault>>;
+pub(super) type Told = Result<(), Box<Fault>>;
 
 fn bad(step: &Step, message: impl Into<String>) -> Fault {
     fault(CODE, &step.span, message)
 }
 
-fn set_in(node: &mut Node, section: &'static Section, steps: &[Step], value: Written<'_>) -> Told {
+fn set_in(node: &mut Node, section: &'static Section, steps: &[Step], value: Given<'_>) -> Told {
     let Some((step, rest)) = steps.split_first() else {
         return Ok(());
     };
@@ -151,6 +166,11 @@ fn set_in(node: &mut Node, section: &'static Section, steps: &[Step], value: Wri
         ));
     }
     match (field.kind, rest) {
+        (Kind::Variants, _) => Err(Box::new(
+            bad(step, "a variant cannot be overridden")
+                .expecting("expected a field of the joint")
+                .help(EXAMPLE),
+        )),
         // A table that may be named in one word: a filler.
         (Kind::List(inner), []) if inner.shorthand.is_some() => {
             *slot(node, section, step)? = value.node(Kind::Table(inner));
@@ -394,7 +414,7 @@ fn equals(text: &str) -> Option<usize> {
 }
 
 /// The steps of a path: keys joined by dots, in quotes where a name has a dot, with `[n]`.
-fn steps(path: &str, shift: usize) -> Result<Vec<Step>, Span> {
+pub(super) fn steps(path: &str, shift: usize) -> Result<Vec<Step>, Span> {
     let mut steps = Vec::new();
     let mut start = 0;
     let mut quoted = false;

@@ -128,6 +128,16 @@ impl Parts {
                     None => whole,
                 }
             }
+            Kind::Variants => json!({
+                "type": "array",
+                "minItems": 1,
+                "items": {
+                    "type": "object",
+                    "properties": { "name": { "type": "string", "minLength": 1 } },
+                    "required": ["name"],
+                    "minProperties": 2,
+                },
+            }),
             Kind::List(section) => {
                 let one = self.section(section);
                 let mut forms = vec![json!({ "type": "array", "items": one, "minItems": 1 }), one];

@@ -1,11 +1,12 @@
 //! Where heads, washers and nuts press, and the holes they stand over.
 
+mod hardware;
 mod parts;
 
 use crate::{
     catalog::{self, SeatRecord, Status, Thread},
     joint::{
-        Engagement, MOST_PLATES, Seat,
+        Engagement, Hardware, MOST_PLATES, Seat,
         collector::{Collector, Wording, fault},
         contact::one_for_each,
         plates::PlateDraft,
@@ -37,6 +38,8 @@ pub(super) struct Seats {
     pub washer_thickness: f64,
     /// How many.
     pub washers: u32,
+    /// Volumes of head, nut and washers.
+    pub hardware: Hardware,
     /// Whether the head is a cylinder rather than a hexagon.
     pub cylindrical: bool,
 }
@@ -250,6 +253,7 @@ pub(super) fn read(
         washer_thickness: thickness(head_washer).unwrap_or(0.0)
             + thickness(nut_washer).unwrap_or(0.0),
         washers: u32::from(head_washer.is_some()) + u32::from(nut_washer.is_some()),
+        hardware: hardware::of(bolt, [head_washer, nut_washer]),
         cylindrical: head.is_some_and(|head| head.kind != "hex"),
     })
 }

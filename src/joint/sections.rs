@@ -150,6 +150,19 @@ pub static FILE: Section = Section {
             "how inputs scatter together",
             "{ bolts = \"independent\" }",
         ),
+        field(
+            "cost",
+            Kind::Number,
+            "what the joint costs, in any measure of your own, for `compare`",
+            "3.5",
+        )
+        .within(0.0, 1e12),
+        field(
+            "variant",
+            Kind::Variants,
+            "other versions of the joint for `compare`: a name, and every field that differs by its path",
+            "[{ name = \"tighter\", fastener.torque.value = \"2 N·m\" }]",
+        ),
     ],
 };
 

@@ -159,6 +159,8 @@ impl Walk<'_> {
                 .record(stated.node, section, stated.path)
                 .map(Value::Record),
             Kind::List(section) => self.records(stated, section).map(Value::Records),
+            // They are taken out of the file before it is walked.
+            Kind::Variants => None,
         }
     }
 

@@ -55,6 +55,10 @@ fn on_metal(
         .bolts()
         .map(|(fastener, at)| (at, fastener.hole_radius[index]))
         .collect();
+    // A zone that lies wholly in cut-outs has been told of.
+    if metal_share(plate, &[], zone) == Some(0.0) {
+        return;
+    }
     let Some(share) = metal_share(plate, &holes, zone) else {
         return;
     };
@@ -70,7 +74,7 @@ fn on_metal(
                 )
             } else {
                 format!(
-                    "the {what} zone lies wholly in bolt holes or cut-outs of plate `{}`",
+                    "the {what} zone lies wholly in bolt holes of plate `{}`",
                     plate.name
                 )
             },

@@ -6,8 +6,8 @@ use crate::{
     catalog::{Datum, Grade, Material, MaterialKind, Status, Thread},
     joint::{
         Bolts, Bounds, Compliance, ConeRule, ConeShape, Contact, Engagement, FaceFriction,
-        Fastener, Finish, Friction, HeadModel, InsertHold, Joint, Law, LockWasher, Medium, Outline,
-        Plate, Seat, Service, Sink, Source, Tightening, TorqueTightening, Zone,
+        Fastener, Finish, Friction, Hardware, HeadModel, InsertHold, Joint, Law, LockWasher,
+        Medium, Outline, Plate, Seat, Service, Sink, Source, Tightening, TorqueTightening, Zone,
     },
     numerics::distribution::Shape,
 };
@@ -70,6 +70,11 @@ pub fn m6() -> Fastener {
         hole_radius: vec![3.3e-3; 2],
         washer_thickness: 0.0,
         washers: 0,
+        hardware: Hardware {
+            head: None,
+            nut: None,
+            washers: None,
+        },
         cylindrical_head: false,
         engagement: Engagement::Nut,
         tightening: Tightening::Torque(TorqueTightening {
@@ -190,6 +195,8 @@ pub fn joint() -> Joint {
         fillers: vec![None],
         measured: None,
         losses: None,
+        cost: None,
+        missing: Vec::new(),
         arrange: None,
         uncertain: Vec::new(),
         bolts_scatter: Bolts::ONE_LOT,

@@ -14,7 +14,7 @@ use crate::{
 };
 
 /// Widest name in the table, characters.
-const NAME: usize = 34;
+const NAME: usize = 28;
 /// Share of no input alone above which few extreme draws are behind the shares.
 const MUCH: f64 = 0.5;
 /// Total share below which an input is not worth a remedy.

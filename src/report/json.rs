@@ -7,15 +7,17 @@ use crate::{
         RequirementResult, RingRow, Sampling, TorqueSweep, Worst,
     },
     joint::{Limit, Plane, RequirementKind},
-    report::{media::vacuum_over, number::inverse},
+    report::{media::vacuum_over, number::inverse, text::left_out},
     uncertainty::{InMedium, Verification},
 };
 use serde_json::{Map, Value, json};
 
+mod comparison;
 mod pressure;
 mod temperatures;
 mod window;
 
+pub use comparison::comparison;
 pub(super) use pressure::differences;
 
 /// Number of the file format and of this contract.
@@ -47,6 +49,7 @@ pub fn estimate(estimate: &Estimate) -> Value {
             json!({ "source": estimate.source_plane, "sink": estimate.sink_plane }),
         ),
         ("heat", json!(estimate.heat)),
+        ("without", json!(left_out(estimate))),
         ("bolts_scatter", json!(estimate.bolts_scatter)),
         ("requirement", worst(estimate)),
         ("cases", json!(cases)),
@@ -163,6 +166,7 @@ fn worst_cases(worst: &Worst) -> Value {
 fn bolt(bolt: &BoltResult) -> Value {
     json!({
         "at": bolt.at,
+        "missing": bolt.missing,
         "force": band(&bolt.force),
         "force_in_service": band(&bolt.force_in_service),
         "strength_use": strength_use(bolt.strength_use),

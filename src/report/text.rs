@@ -80,6 +80,15 @@ fn heading(estimate: &Estimate) -> String {
         .cases
         .first()
         .map_or(f64::NAN, |case| case.numerical_error);
+    let without = left_out(estimate);
+    if !without.is_empty() {
+        let numbers: Vec<String> = without.iter().map(ToString::to_string).collect();
+        let _ = writeln!(
+            text,
+            "without bolt {}: the hole stays, no clamp force, no heat through the shank",
+            numbers.join(", ")
+        );
+    }
     let _ = writeln!(
         text,
         "field {}, {}; {band}; numerical error {}",
@@ -88,6 +97,13 @@ fn heading(estimate: &Estimate) -> String {
         percent(error)
     );
     text
+}
+
+/// Numbers of the bolts that are left out, from 1.
+pub(super) fn left_out(estimate: &Estimate) -> Vec<usize> {
+    let bolts = estimate.cases.first().map_or(&[][..], |case| &case.bolts);
+    let missing = bolts.iter().enumerate().filter(|(_, bolt)| bolt.missing);
+    missing.map(|(bolt, _)| bolt + 1).collect()
 }
 
 /// Draws solved beside the surfaces that all draws are read from.
@@ -118,6 +134,12 @@ fn bolts(case: &CaseResult, detail: Detail) -> String {
     let mut rows = Vec::new();
     for (name, group) in groups(&case.bolts) {
         let bolt = group[0];
+        if bolt.missing {
+            let mut row = vec![format!("{name} left out")];
+            row.extend(std::iter::repeat_n("–".to_owned(), 9));
+            rows.push(row);
+            continue;
+        }
         let mut row = vec![name];
         row.extend(band(&bolt.force, 1e3));
         row.extend(band(&bolt.force_in_service, 1e3));
@@ -156,7 +178,8 @@ fn bolts(case: &CaseResult, detail: Detail) -> String {
 /// Bolts that share force, strength use and largest torque, with their numbers in file order.
 fn groups(bolts: &[BoltResult]) -> Vec<(String, Vec<&BoltResult>)> {
     let like = |one: &BoltResult, other: &BoltResult| {
-        one.force == other.force
+        one.missing == other.missing
+            && one.force == other.force
             && one.force_in_service == other.force_in_service
             && one.strength_use == other.strength_use
             && one.axial == other.axial

@@ -220,7 +220,7 @@ fn opening(window: &TorqueWindow) -> Vec<String> {
                 format!(" ({name} of the same grade is the next that has it)")
             });
         lines.push(format!(
-            "by the limits, not solved: {ratio:.1} times the force, which takes {ratio:.1} times the stress area{larger} or as many \
+            "by the limits, not solved: {ratio:.2} times the force, which takes {ratio:.2} times the stress area{larger} or as many \
              times the bolts; a filler asks for less",
         ));
     } else if window.heat.as_ref().is_some_and(Vec::is_empty) && !window.plates_fail {

@@ -21,6 +21,8 @@ pub struct Plan {
     pub thickness: [f64; 2],
     /// The bolts; at least one, each axis inside both plates.
     pub sites: Vec<Site>,
+    /// Holes whose bolts are missing; none reaches another.
+    pub empty: Vec<Hole>,
     /// Where heat enters the first plate.
     pub source: Source,
     /// Where heat leaves the second plate.
@@ -38,6 +40,23 @@ pub struct Site {
     pub hole_radius: [f64; 2],
     /// Its pressure field.
     pub cone: Cone,
+}
+
+/// A hole without a bolt.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Hole {
+    /// Axis in joint coordinates, m.
+    pub at: [f64; 2],
+    /// Radius in both plates, m.
+    pub radius: [f64; 2],
+}
+
+impl Hole {
+    /// Its radius in one plate; that of the faying faces, the larger one, when none is named, m.
+    pub(super) fn radius_in(&self, plate: Option<usize>) -> f64 {
+        let [first, second] = self.radius;
+        plate.map_or(first.max(second), |plate| self.radius[plate])
+    }
 }
 
 /// Rings that make the ring sum good to 1e-4.
@@ -160,17 +179,21 @@ impl Plan {
             outline_sides(outline, *origin, axis)
         });
         let Neighbours { others, nearer } = neighbours(self, bolt, &plate);
-        let extent = |sides: &[&[Side]], hole_radius: f64, hole: &dyn Fn(usize) -> f64| {
+        let extent = |sides: &[&[Side]], (hole_radius, plate), hole: &dyn Fn(usize) -> f64| {
             let sides: Vec<Side> = sides.concat();
             let intruding = others
                 .iter()
-                .filter(|(other, to)| hole(*other) > 0.5 * to[0].hypot(to[1]))
-                .map(|(other, to)| {
+                .map(|(other, to)| (*to, hole(*other)))
+                .filter(|(to, radius)| *radius > 0.5 * to[0].hypot(to[1]));
+            let empty = self.empty.iter().map(|hole| {
+                let to = [0, 1].map(|k| hole.at[k] - axis[k]);
+                (to, hole.radius_in(plate))
+            });
+            let intruding = intruding
+                .chain(empty)
+                .map(|(centre, radius)| {
                     let mut within = sides.clone();
-                    within.push(Side::Circle {
-                        centre: *to,
-                        radius: hole(*other),
-                    });
+                    within.push(Side::Circle { centre, radius });
                     Region::new(&within)
                 })
                 .collect();
@@ -184,13 +207,13 @@ impl Plan {
         let holes = self.sites[bolt].hole_radius;
         let zone = zone_sides(&self.source.zone, axis);
         View {
-            plates: [0, 1].map(|k| extent(&[&nearer, &plate[k]], holes[k], &hole(k))),
+            plates: [0, 1].map(|k| extent(&[&nearer, &plate[k]], (holes[k], Some(k)), &hole(k))),
             interface: extent(
                 &[&nearer, &plate[0], &plate[1]],
-                self.hole_radius(bolt),
+                (self.hole_radius(bolt), None),
                 &|other| self.hole_radius(other),
             ),
-            source: extent(&[&nearer, &plate[0], &zone], holes[0], &hole(0)),
+            source: extent(&[&nearer, &plate[0], &zone], (holes[0], Some(0)), &hole(0)),
             others,
         }
     }
@@ -203,11 +226,18 @@ impl Plan {
         let on_the_faces = self.outlines.iter().all(|(outline, origin)| {
             Region::new(&outline_sides(outline, *origin, at)).holds_disc(reach)
         });
+        let clear =
+            |to: [f64; 2], radius: f64| (to[0] - at[0]).hypot(to[1] - at[1]) >= reach + radius;
         on_the_faces
-            && self.sites.iter().enumerate().all(|(other, site)| {
-                let distance = (site.at[0] - at[0]).hypot(site.at[1] - at[1]);
-                other == bolt || distance >= reach + self.hole_radius(other)
-            })
+            && self
+                .empty
+                .iter()
+                .all(|hole| clear(hole.at, hole.radius_in(None)))
+            && self
+                .sites
+                .iter()
+                .enumerate()
+                .all(|(other, site)| other == bolt || clear(site.at, self.hole_radius(other)))
     }
 
     fn overlapping(&self, bolt: usize) -> bool {

@@ -36,7 +36,10 @@ impl Cells {
             }
             pressure += site.cone.pressure(radius, forces[bolt]) * self.restored[bolt];
         }
-        Some(pressure)
+        let in_a_hole = self.plan.empty.iter().any(|hole| {
+            (point[0] - hole.at[0]).hypot(point[1] - hole.at[1]) < hole.radius_in(None)
+        });
+        (!in_a_hole).then_some(pressure)
     }
 
     /// Highest pressure on the faying faces, Pa.

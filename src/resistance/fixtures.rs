@@ -52,6 +52,7 @@ pub(super) fn round(rings: usize) -> Plan {
     Plan {
         outlines: [(disc.clone(), [0.0; 2]), (disc, [0.0; 2])],
         thickness: [5e-3; 2],
+        empty: Vec::new(),
         sites: vec![site([0.0; 2], &pair([3.125e-3, 5e-3], 0.03, [5e-3; 2]))],
         source: WHOLE_FACE,
         sink: Sink::IsothermalBack,
@@ -64,6 +65,7 @@ fn heated_in_the_middle(size: [f64; 2], thickness: [f64; 2], sites: Vec<Site>) -
     Plan {
         outlines: [(outline.clone(), [0.0; 2]), (outline, [0.0; 2])],
         thickness,
+        empty: Vec::new(),
         sites,
         source: Source {
             zone: Zone::Rectangle {
@@ -104,6 +106,7 @@ pub(super) fn crowded(places: &[[f64; 2]]) -> Plan {
             (Outline::Disc { radius: 0.05 }, [0.02, 0.025]),
         ],
         thickness,
+        empty: Vec::new(),
         sites: places.iter().map(|at| site(*at, &pair)).collect(),
         source: WHOLE_FACE,
         sink: Sink::Film(800.0),
@@ -143,6 +146,7 @@ pub(super) fn lattice(side: usize, pitch: f64) -> Plan {
     Plan {
         outlines: [(outline.clone(), [0.0; 2]), (outline, [0.0; 2])],
         thickness: [5e-3; 2],
+        empty: Vec::new(),
         sites: (0..side * side)
             .map(|index| site([middle(index % side), middle(index / side)], &pair))
             .collect(),

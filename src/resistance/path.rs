@@ -322,6 +322,7 @@ impl Cells {
         let near = |a: f64, b: f64| (a - b).abs() <= ROUNDING * radius;
         let site = &self.plan.sites[0];
         self.plan.sites.len() == 1
+            && self.plan.empty.is_empty()
             && self.plan.source.zone == Zone::Face
             && near(radius, other)
             && near(site.hole_radius[0], site.hole_radius[1])

@@ -194,7 +194,7 @@ fn better(
 
 /// The case in which the joint stands worst: of most resistance, or of least where the requirement
 /// asks for at least so much.
-pub(super) fn worst_case(chain: &Chain) -> Result<usize, Failure> {
+pub(crate) fn worst_case(chain: &Chain) -> Result<usize, Failure> {
     let cases = chain.joint().service.cases.len();
     let resistances = (0..cases)
         .map(|case| {
@@ -246,7 +246,7 @@ fn point(sought: &Sought<'_>, torque: f64) -> Result<(TorquePoint, Option<f64>),
 }
 
 /// The requirement as a source-to-sink resistance, where it can be put so.
-fn required(joint: &Joint) -> Option<(f64, Limit)> {
+pub(super) fn required(joint: &Joint) -> Option<(f64, Limit)> {
     let require = joint.service.require?;
     let flipped = match require.bound {
         Limit::Most => Limit::Least,

@@ -43,21 +43,21 @@ fn a_minimum_between_rows_is_told_with_its_value() {
 #[test]
 fn the_limit_of_strength_itself_is_the_best_torque_where_more_is_better() {
     let mut swept = torque_sweep();
-    swept.best = Some(1.7);
+    swept.best = Some(1.9);
     swept.at_limit = Some(Minimum {
-        torque: 1.7,
+        torque: 1.9,
         source_to_sink: 0.099,
         added_by_joint: 0.055,
     });
     let report = sweep::torque(&swept);
     for part in [
-        "best     1.700 N·m: lowest source to sink that strength allows here, 10 % below the stated",
+        "best     1.900 N·m: lowest source to sink that strength allows here, 10 % below the stated",
         "it is the limit of strength itself",
         "near best",
     ] {
         assert!(report.contains(part), "{part}: {report}");
     }
-    assert_eq!(json::torque(&swept)["at_limit"]["torque"], json!(1.7));
+    assert_eq!(json::torque(&swept)["at_limit"]["torque"], json!(1.9));
     // A torque is not set against itself.
     swept.best = Some(swept.stated);
     swept.at_limit = None;

@@ -253,7 +253,11 @@ fn flatness_stated(joint: &Joint) -> Option<String> {
 
 /// Largest distance from a bolt to its nearest neighbour, m.
 fn widest_pitch(joint: &Joint) -> Option<f64> {
-    let places: Vec<[f64; 2]> = joint.bolts().map(|(_, place)| place).collect();
+    let bolts = joint.bolts().enumerate();
+    let places: Vec<[f64; 2]> = bolts
+        .filter(|(bolt, _)| !joint.is_missing(*bolt))
+        .map(|(_, (_, place))| place)
+        .collect();
     places
         .iter()
         .enumerate()

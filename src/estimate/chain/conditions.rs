@@ -273,6 +273,7 @@ impl Chain<'_> {
                 forces.extend(bolts.map(|bolt| force(Some(bolt))));
             }
         }
+        self.vacate(forces);
     }
 
     /// Measured W/K per bolt at the temperature of a case; none where no such law is stated.
@@ -360,6 +361,6 @@ impl Chain<'_> {
                 Ok(resistance.recip())
             })
             .collect::<Result<Vec<f64>, Failure>>()?;
-        Ok(self.group_of.iter().map(|group| by_group[*group]).collect())
+        Ok(self.of_bolts(&by_group))
     }
 }

@@ -1,11 +1,11 @@
 //! The chain on closed forms and networks: cones, ring sums, plan grid.
 
-use std::sync::Arc;
+use std::{borrow::Cow, sync::Arc};
 
 use crate::{
     diagnostic::Caution,
     estimate::{
-        Chain, Failure, PressureResult, Realisation,
+        Chain, Failure, PressureResult, Realisation, RingRow,
         chain::{conditions::Conditions, form::with_form, geometry::Geometry, levels::Level},
     },
     joint::{Bounds, Joint},
@@ -52,17 +52,65 @@ impl ConeModel {
 
     /// The path of a case at one realisation, model form applied.
     pub(super) fn path(&self, case: usize, conditions: &Conditions, at: &Realisation) -> Path {
-        let solved = self.cells().solve(&conditions.load());
-        let path = match self.levels.get(case) {
+        let solved = self.cells().solve(&self.clamped(conditions).load());
+        let mut path = match self.levels.get(case) {
             Some(level) => level.calibration.applied(solved),
             None => solved,
         };
+        if !self.all_clamp(conditions) {
+            let known = std::mem::take(&mut path.contact_per_bolt);
+            path.contact_per_bolt = vec![0.0; conditions.forces.len()];
+            for (bolt, contact) in self.geometry.clamping.iter().zip(known) {
+                path.contact_per_bolt[*bolt] = contact;
+            }
+        }
         with_form(path, self.form.at(at.field))
+    }
+
+    fn all_clamp(&self, conditions: &Conditions) -> bool {
+        self.geometry.clamping.len() == conditions.forces.len()
+    }
+
+    /// Conditions as the networks take them: those of the bolts that are there.
+    pub(super) fn clamped<'a>(&self, conditions: &'a Conditions) -> Cow<'a, Conditions> {
+        if self.all_clamp(conditions) {
+            return Cow::Borrowed(conditions);
+        }
+        Cow::Owned(Conditions {
+            forces: self.clamping(&conditions.forces),
+            shanks: self.clamping(&conditions.shanks),
+            ..conditions.clone()
+        })
+    }
+
+    /// Values of the bolts that are there, of the values of all.
+    pub(super) fn clamping(&self, values: &[f64]) -> Vec<f64> {
+        let clamping = self.geometry.clamping.iter();
+        clamping.map(|bolt| values[*bolt]).collect()
+    }
+
+    /// Place among the bolts that are there; none for one that is missing.
+    fn place(&self, bolt: usize) -> Option<usize> {
+        self.geometry.clamping.binary_search(&bolt).ok()
+    }
+
+    /// Radius where the contact of a bolt ends, m; 0 where the bolt is missing.
+    pub(super) fn contact_radius(&self, bolt: usize) -> f64 {
+        self.place(bolt)
+            .map_or(0.0, |place| self.cones()[place].contact_radius)
+    }
+
+    /// The rings around a bolt; none where it is missing.
+    pub(super) fn rings(&self, conditions: &Conditions, bolt: usize) -> Vec<RingRow> {
+        let clamped = self.clamped(conditions);
+        self.place(bolt)
+            .map_or_else(Vec::new, |place| self.cells().rings(&clamped.load(), place))
     }
 
     /// The pressure field under the forces of the bolts, N.
     pub(super) fn pressure(&self, forces: &[f64]) -> PressureResult {
         let cells = self.cells();
+        let forces = &self.clamping(forces);
         PressureResult {
             peak: cells.peak_pressure(forces),
             contact_area: cells.contact_area(),

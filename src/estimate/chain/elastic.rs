@@ -106,6 +106,17 @@ impl ElasticModel {
         }
     }
 
+    /// The same plates, with nothing taken over that draws of other bolts worked out.
+    pub(super) fn afresh(&self) -> Self {
+        Self {
+            fineness: self.fineness,
+            solver: self.solver.clone(),
+            cases: Vec::new(),
+            medium: self.medium.clone(),
+            parent: Vec::new(),
+        }
+    }
+
     /// The spread of a case with its medium, where one is known.
     fn known_spread(&self, case: usize) -> Option<(Medium, Arc<Spread>)> {
         let own = || {

@@ -1,7 +1,10 @@
 //! Bounds of the model form, and what they do to a path.
 
 use crate::{
-    estimate::{Chain, Failure, Realisation, chain::cone::ConeModel},
+    estimate::{
+        Chain, Failure, Realisation,
+        chain::{conditions::Conditions, cone::ConeModel},
+    },
     joint::{Bounds, Engagement, Fastener, Medium},
     resistance::Path,
 };
@@ -61,7 +64,7 @@ impl ConeModel {
         let Some(gas) = local.interface().gas else {
             return Ok(0.0);
         };
-        let bolts = conditions.forces.len() as f64;
+        let bolts = chain.joint().clamping() as f64;
         let force = conditions.forces.iter().sum::<f64>() / bolts;
         let reach = 0.5 * (chain.footprint() / bolts).sqrt();
         let softest = [chain.joint().warm(), chain.joint().cold()]
@@ -82,8 +85,11 @@ impl ConeModel {
         let Some(bare) = conditions.without_gas() else {
             return Ok(0.0);
         };
-        let filled = self.geometry.cells.solve(&conditions.load()).added_by_joint;
-        let empty = self.geometry.cells.solve(&bare.load()).added_by_joint;
+        let added = |under: &Conditions| {
+            let clamped = self.clamped(under);
+            self.cells().solve(&clamped.load()).added_by_joint
+        };
+        let (filled, empty) = (added(&conditions), added(&bare));
         let share = 1.0 - filled / empty;
         Ok(if share.is_finite() {
             share.clamp(0.0, 1.0)

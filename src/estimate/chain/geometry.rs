@@ -6,12 +6,14 @@ use crate::{
     estimate::{Failure, chain::levels::FINENESS},
     joint::{Engagement, Fastener, Joint, Outline, Plate},
     pressure::{self, Cone, Pair},
-    resistance::{Cells, Plan, PlanGrid, Site, cells, cells::DEFAULT_RINGS, plan_grid},
+    resistance::{Cells, Hole, Plan, PlanGrid, Site, cells, cells::DEFAULT_RINGS, plan_grid},
 };
 
 /// Everything that plates and places of a joint decide alone.
 #[derive(Debug)]
 pub(super) struct Geometry {
+    /// Bolts that are there, counted from 0 in file order; pairs, cones and cells are theirs.
+    pub(super) clamping: Vec<usize>,
     pub(super) pairs: Vec<Pair>,
     pub(super) cones: Vec<Cone>,
     pub(super) cells: Arc<Cells>,
@@ -27,16 +29,18 @@ impl Geometry {
         let Some((source, sink)) = ends.filter(|_| beyond.is_empty()) else {
             return Err(Failure::BeyondCone(beyond));
         };
-        let pairs: Vec<Pair> = joint
-            .bolts()
+        let bolts: Vec<(&Fastener, [f64; 2])> = joint.bolts().collect();
+        let (missing, clamping): (Vec<usize>, Vec<usize>) =
+            (0..bolts.len()).partition(|bolt| joint.is_missing(*bolt));
+        let held = || clamping.iter().map(|bolt| bolts[*bolt]);
+        let pairs: Vec<Pair> = held()
             .map(|(fastener, place)| pair(joint, fastener, place))
             .collect();
         let cones: Vec<Cone> = pairs
             .iter()
             .map(|pair| pressure::cone(pair, joint.contact.cone, joint.contact.shape))
             .collect();
-        let sites = joint
-            .bolts()
+        let sites = held()
             .zip(&cones)
             .map(|((fastener, at), cone)| Site {
                 at,
@@ -49,6 +53,13 @@ impl Geometry {
             outlines: plates.map(|plate| (plate.outline.clone(), plate.origin)),
             thickness: plates.map(|plate| plate.thickness),
             sites,
+            empty: missing
+                .iter()
+                .map(|bolt| Hole {
+                    at: bolts[*bolt].1,
+                    radius: bolts[*bolt].0.outer_holes(),
+                })
+                .collect(),
             source,
             sink,
             rings: DEFAULT_RINGS,
@@ -59,6 +70,7 @@ impl Geometry {
             Some(plan_grid(&cells, FINENESS)?)
         };
         Ok(Self {
+            clamping,
             pairs,
             cones,
             cells,

@@ -49,7 +49,8 @@ impl ConeModel {
                 continue;
             }
             let failed = |found| chain.network(case, found);
-            let load = nominal.load();
+            let clamped = self.clamped(&nominal);
+            let load = clamped.load();
             let cells = self.geometry.cells.solve(&load);
             let there = others
                 .iter()
@@ -80,7 +81,8 @@ impl ConeModel {
         chain: &Chain,
         state: &State,
     ) -> Result<f64, Failure> {
-        let load = state.conditions.load();
+        let clamped = self.clamped(&state.conditions);
+        let load = clamped.load();
         let failed = |found| chain.network(0, found);
         let error = match &self.geometry.grid {
             None => self.geometry.cells.ring_error(&load).map_err(failed)? / 3.0,

@@ -54,6 +54,30 @@ pub(super) fn draw(sheet: &mut Sheet, view: &View, map: &PlanMap) {
     }
 }
 
+/// Draws plates, their parts, heated zone and holes, no more: for a map too small for the rest.
+pub(super) fn draw_small(sheet: &mut Sheet, view: &View, map: &PlanMap) {
+    const FINE: Stroke = Stroke::solid(NARROW, INK);
+    for detail in &map.details {
+        if detail.kind == DetailKind::CutOut {
+            sheet.area(view.frame.area(&detail.shape.edge(view)), PAPER);
+        }
+        shape(sheet, view, &detail.shape, FINE);
+    }
+    for (index, outline) in map.outlines.iter().enumerate().rev() {
+        let stroke = if index == 0 { FINE } else { HIDDEN };
+        shape(sheet, view, &outline.shape, stroke);
+    }
+    for zone in &map.heated {
+        shape(sheet, view, zone, Stroke::solid(1.0, ACCENT));
+    }
+    for bolt in &map.bolts {
+        let (centre, radius) = (bolt.at, bolt.hole_radius);
+        let hole = PlanShape::Disc { centre, radius };
+        sheet.area(view.frame.area(&hole.edge(view)), PAPER);
+        shape(sheet, view, &hole, FINE);
+    }
+}
+
 fn shape(sheet: &mut Sheet, view: &View, shape: &PlanShape, stroke: Stroke) {
     // Edges on the rim of the window are drawn whole, so the frame gives half a line.
     let frame = grown(view.frame, 1.0);

@@ -10,6 +10,10 @@ pub(super) fn sound(problem: &Problem) -> Result<(), Failure> {
         "interfaces are not one fewer than bodies",
     )?;
     require(!problem.bolts.is_empty(), "there is no bolt")?;
+    require(
+        problem.bolts.iter().any(|bolt| bolt.force > 0.0),
+        "no bolt clamps",
+    )?;
     problem.bodies.iter().try_for_each(body)?;
     problem.interfaces.iter().try_for_each(interface)?;
     problem
@@ -79,7 +83,10 @@ fn bolt(problem: &Problem, bolt: &Bolt) -> Result<(), Failure> {
         bolt.at.iter().all(|at| at.is_finite()),
         "the place of a bolt is not a number",
     )?;
-    require(positive(bolt.force), "the force of a bolt is not positive")?;
+    require(
+        bolt.force >= 0.0 && bolt.force.is_finite(),
+        "the force of a bolt is below zero",
+    )?;
     require(ring(bolt.head), "the seat of a head is not a ring")?;
     require(
         bolt.hole_radii.len() == problem.bodies.len(),

@@ -75,7 +75,7 @@ pub(super) fn solve(
         _ => system.operator.zeros(),
     };
     let heads_rock = problem.head == Head::Rigid && previous.is_none();
-    let hardness = Course::new(heads_rock).hardness;
+    let hardness = Course::new(problem.fineness, heads_rock).hardness;
     let changes: Vec<Vec<u8>> = active.iter().map(|set| vec![0; set.len()]).collect();
     for (index, active) in active.iter().enumerate() {
         set_ties(
@@ -220,7 +220,7 @@ fn set_ties(
 impl Search<'_> {
     /// Steps until the set repeats; steps taken and the last residual.
     fn run(&mut self) -> Result<(usize, f64), Failure> {
-        let mut course = Course::new(self.hardness < 1.0);
+        let mut course = Course::new(self.problem.fineness, self.hardness < 1.0);
         let mut changed = usize::MAX;
         for step in 1.. {
             let (sets, residual) = self.step(&course)?;
@@ -252,7 +252,7 @@ impl Search<'_> {
         let before = self.displacement.clone();
         let effort = Effort {
             tolerance: course.tolerance,
-            energy: (!course.is_accurate()).then_some(SOFT_MOTIONS),
+            energy: course.trusts_energy().then_some(SOFT_MOTIONS),
             reference: Some(self.load_length()),
             most: MOST_ITERATIONS,
         };

@@ -93,7 +93,7 @@ pub struct Bolt {
     pub at: [f64; 2],
     /// Where the head presses.
     pub head: Annulus,
-    /// Clamp force, N.
+    /// Clamp force, N; 0 where the bolt is missing and its hole alone is left.
     pub force: f64,
     /// Radius of the hole in every body, m; 0 for none.
     pub hole_radii: Vec<f64>,

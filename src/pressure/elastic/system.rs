@@ -172,7 +172,7 @@ impl System {
         let foot = mesh.bodies[last].main_layer();
         let mut heads = Seats::new(mesh, &top.region, -1.0);
         let mut nuts = Seats::new(mesh, &foot.region, 1.0);
-        for bolt in &problem.bolts {
+        for bolt in problem.bolts.iter().filter(|bolt| bolt.force > 0.0) {
             heads.add(mesh, (bolt, bolt.head))?;
             match bolt.end {
                 End::Nut(seat) => nuts.add(mesh, (bolt, seat))?,

@@ -118,7 +118,8 @@ fn scaled(case: &CaseResult) -> String {
     let nominal = |resistance: &Band| inverse(resistance)[1].unwrap_or(f64::NAN);
     let contact = nominal(&case.results.contact.resistance);
     let whole = nominal(&case.results.source_to_sink.resistance);
-    let count = case.bolts.len().max(1) as f64;
+    let clamping = case.bolts.iter().filter(|bolt| !bolt.missing).count();
+    let count = clamping.max(1) as f64;
     let mut text = format!(
         "per footprint of {} cm²: contact only {} W/(m²·K), source to sink {} W/(m²·K)\n",
         four(case.footprint * 1e4),
@@ -131,7 +132,7 @@ fn scaled(case: &CaseResult) -> String {
         four(contact / count),
         four(whole / count),
     );
-    text.push_str(if case.bolts.len() > 1 {
+    text.push_str(if clamping > 1 {
         " (spreading: do not multiply)\n"
     } else {
         "\n"
@@ -243,7 +244,8 @@ pub fn cases(estimate: &Estimate) -> String {
         }),
         row("clamp force in service, kN", &|case| {
             case.bolts
-                .first()
+                .iter()
+                .find(|bolt| !bolt.missing)
                 .map_or_else(String::new, |bolt| spread(&bolt.force_in_service, 1e3))
         }),
         row("contact only, K/W", &|case| {

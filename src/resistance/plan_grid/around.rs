@@ -52,6 +52,7 @@ impl PlanGrid {
         let lattice = Arc::new(cells(&Plan {
             outlines: [(outline.clone(), [0.0; 2]), (outline, [0.0; 2])],
             thickness: plan.thickness,
+            empty: Vec::new(),
             sites: (0..SIDE * SIDE)
                 .map(|index| Site {
                     at: [place(index % SIDE), place(index / SIDE)],

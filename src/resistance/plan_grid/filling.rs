@@ -39,13 +39,16 @@ impl Plan {
         at + reach >= low && at - reach <= high
     }
 
-    /// Holes of some bolts in one plate; of the faying faces when none is named.
+    /// Holes of some bolts and those without a bolt in one plate; of the faying faces when none is
+    /// named.
     fn holes(&self, plate: Option<usize>, bolts: &[usize]) -> impl Iterator<Item = Disc> {
-        bolts.iter().map(move |bolt| {
+        let held = bolts.iter().map(move |bolt| {
             let site = &self.sites[*bolt];
             let radius = plate.map_or(self.hole_radius(*bolt), |plate| site.hole_radius[plate]);
             (site.at, radius)
-        })
+        });
+        let empty = self.empty.iter();
+        held.chain(empty.map(move |hole| (hole.at, hole.radius_in(plate))))
     }
 
     /// Samples along each side of a rectangle, close enough that one at least falls between the

@@ -237,7 +237,9 @@ fn asperities(
     }
     let seats: f64 = joint
         .bolts()
-        .map(|(fastener, _)| {
+        .zip(&conditions.forces)
+        .filter(|(_, force)| **force > 0.0)
+        .map(|((fastener, _), _)| {
             let seat = fastener.head_seat;
             std::f64::consts::PI * (seat.outer_radius.powi(2) - seat.inner_radius.powi(2))
         })

@@ -397,16 +397,21 @@ pub(super) fn ends(range: [f64; 2]) -> [f64; 3] {
     [found[0], 0.0, found[found.len() - 1]]
 }
 
-/// Forces at which form and flatness are bounded: the ends, the nominal one, and one between the least
-/// and the nominal where these lie far apart, since flatness closes somewhere on the way.
-pub(super) fn bounded(range: [f64; 2]) -> Vec<f64> {
+/// Forces at which the form, and flatness where it is loose, are bounded.
+///
+/// What heads, friction and asperities do falls as the force grows: the nominal force stands for all
+/// above it, which is the wider side. Flatness is bounded at the ends and the nominal force, and at one
+/// between the least and the nominal where these lie far apart, since it closes somewhere on the way.
+pub(super) fn bounded(range: [f64; 2], loose: bool) -> Vec<f64> {
     /// A third of the nominal force.
     const FAR: f64 = -1.1;
     let [least, nominal, most] = ends(range);
-    if least < FAR {
+    if loose && least < FAR {
         vec![least, 0.5 * least, nominal, most]
-    } else {
+    } else if loose {
         vec![least, nominal, most]
+    } else {
+        vec![least, nominal]
     }
 }
 

@@ -179,10 +179,11 @@ impl ElasticModel {
         let forms = self.solver.forms(joint);
         let mut variants = vec![Variant::Stated];
         variants.extend(forms);
-        if joint.most_loose_flatness() > 0.0 {
+        let loose = joint.most_loose_flatness() > 0.0;
+        if loose {
             variants.extend([Variant::Bent(-1.0), Variant::Bent(1.0)]);
         }
-        let mut forces = response::bounded(range);
+        let mut forces = response::bounded(range, loose);
         forces.sort_by(|one, other| one.abs().total_cmp(&other.abs()));
         let state = |force: f64, variant: Variant| State {
             variant,

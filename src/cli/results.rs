@@ -1,0 +1,106 @@
+//! A folder of results: one JSON for every joint file and one table of all.
+
+use crate::{
+    cli::{
+        batch::Shard,
+        console::Trouble,
+        input,
+        output::{Existing, Target},
+    },
+    report::csv,
+};
+use std::{
+    collections::BTreeMap,
+    fs,
+    path::{Path, PathBuf},
+    sync::{Mutex, PoisonError},
+};
+
+/// Where the results of a batch go, checked before anything is computed.
+#[derive(Debug)]
+pub struct Results {
+    targets: Vec<Target>,
+    table: Target,
+    rows: Mutex<BTreeMap<usize, String>>,
+}
+
+impl Results {
+    /// The files to write; the folder is made where there is none.
+    pub fn new(
+        folder: &Path,
+        files: &[PathBuf],
+        (existing, part): (Existing, Option<Shard>),
+    ) -> Result<Self, Trouble> {
+        let mut known: BTreeMap<String, &PathBuf> = BTreeMap::new();
+        for path in files {
+            // Names that differ in case alone are one file on some systems.
+            if let Some(other) = known.insert(stem(path).to_lowercase(), path) {
+                return Err(Trouble::usage(
+                    format!(
+                        "`{}` and `{}` would both be written to `{}.json`",
+                        other.display(),
+                        path.display(),
+                        stem(path)
+                    ),
+                    "write them to folders of their own",
+                ));
+            }
+        }
+        fs::create_dir_all(folder).map_err(|found| {
+            Trouble::Failure(format!(
+                "the folder `{}` cannot be made: {found}",
+                folder.display()
+            ))
+        })?;
+        let table = match part {
+            None => "estimates.csv".to_owned(),
+            Some(Shard { part, of }) => format!("estimates_{part}_of_{of}.csv"),
+        };
+        Ok(Self {
+            targets: files
+                .iter()
+                .map(|path| Target::new(&folder.join(format!("{}.json", stem(path))), existing))
+                .collect::<Result<Vec<Target>, Trouble>>()?,
+            table: Target::new(&folder.join(table), existing)?,
+            rows: Mutex::new(BTreeMap::new()),
+        })
+    }
+
+    /// Writes the result of one file, and keeps its rows of the table.
+    pub fn put(
+        &self,
+        index: usize,
+        object: &serde_json::Value,
+        rows: String,
+    ) -> Result<(), Trouble> {
+        self.rows
+            .lock()
+            .unwrap_or_else(PoisonError::into_inner)
+            .insert(index, rows);
+        self.targets[index].write(format!("{object:#}\n").as_bytes())
+    }
+
+    /// Writes the table, in the order of the files; tells what was written.
+    pub fn finish(&self) -> Result<String, Trouble> {
+        let rows = self.rows.lock().unwrap_or_else(PoisonError::into_inner);
+        let mut text = csv::header();
+        text.extend(rows.values().map(String::as_str));
+        self.table.write(text.as_bytes())?;
+        Ok(format!(
+            "wrote {} and {} JSON beside it\n",
+            self.table.path.display(),
+            rows.len()
+        ))
+    }
+}
+
+/// Name of a joint file without folder and ending.
+pub fn stem(path: &Path) -> String {
+    if path == Path::new("-") {
+        return "stdin".to_owned();
+    }
+    path.file_stem().map_or_else(
+        || input::name(path),
+        |stem| stem.to_string_lossy().into_owned(),
+    )
+}

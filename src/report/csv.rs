@@ -1,0 +1,177 @@
+//! Estimates as rows of one table, for spreadsheets: SI, unrounded, comma separated (RFC 4180).
+
+use crate::{
+    estimate::{Band, CaseResult, Estimate, Met},
+    joint::Mass,
+};
+
+/// The columns; values in SI.
+const COLUMNS: [&str; 34] = [
+    "file",
+    "outcome",
+    "message",
+    "title",
+    "field",
+    "resolution",
+    "draws",
+    "case",
+    "contact_K_per_W_low",
+    "contact_K_per_W",
+    "contact_K_per_W_high",
+    "node_to_node_K_per_W_low",
+    "node_to_node_K_per_W",
+    "node_to_node_K_per_W_high",
+    "added_by_joint_K_per_W_low",
+    "added_by_joint_K_per_W",
+    "added_by_joint_K_per_W_high",
+    "source_to_sink_K_per_W_low",
+    "source_to_sink_K_per_W",
+    "source_to_sink_K_per_W_high",
+    "numerical_error",
+    "rise_K_low",
+    "rise_K",
+    "rise_K_high",
+    "hottest_K",
+    "requirement",
+    "bolts",
+    "strength_use",
+    "strength_use_high",
+    "mass_fasteners_kg",
+    "mass_plates_kg",
+    "gap_max_m",
+    "peak_pressure_Pa",
+    "cautions",
+];
+
+/// How the work on a file ended.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Ended {
+    /// With an estimate.
+    Done,
+    /// The file is at fault.
+    Faulty,
+    /// The chain gave no number.
+    Failed,
+}
+
+/// The line that names the columns.
+pub fn header() -> String {
+    line(&COLUMNS.map(str::to_owned))
+}
+
+/// One line for every case of an estimate.
+pub fn rows(file: &str, estimate: &Estimate, mass: &Mass) -> String {
+    let requirement = estimate.requirement().map(|(_, result)| match result.met {
+        Met::Yes => "met",
+        Met::Uncertain => "uncertain",
+        Met::No => "not met",
+    });
+    let codes: Vec<&str> = estimate.cautions.iter().map(|each| each.code).collect();
+    let case = |case: &CaseResult| {
+        let mut cells = vec![
+            file.to_owned(),
+            "done".to_owned(),
+            String::new(),
+            estimate.title.clone(),
+            estimate.field.to_owned(),
+            estimate.resolution.to_owned(),
+            estimate.draws.to_string(),
+            case.name.to_owned(),
+        ];
+        let results = &case.results;
+        for plane in [
+            results.contact,
+            results.node_to_node,
+            results.added_by_joint,
+            results.source_to_sink,
+        ] {
+            cells.extend(band(Some(&plane.resistance)));
+        }
+        cells.push(case.numerical_error.to_string());
+        cells.extend(band(case.rise.as_ref().map(|rise| &rise.source)));
+        cells.push(number(case.rise.map(|rise| rise.hottest.nominal)));
+        cells.push(requirement.unwrap_or("").to_owned());
+        let clamping = case.bolts.iter().filter(|bolt| !bolt.missing);
+        cells.push(clamping.count().to_string());
+        let most = |which: usize| {
+            let uses = case.bolts.iter().filter_map(|bolt| bolt.strength_use);
+            uses.map(|each| each[which]).reduce(f64::max)
+        };
+        cells.extend([number(most(0)), number(most(1))]);
+        cells.extend([mass.fasteners.to_string(), mass.plates.to_string()]);
+        cells.push(number(case.pressure.gap_max));
+        cells.push(case.pressure.peak.to_string());
+        cells.push(codes.join(" "));
+        line(&cells)
+    };
+    estimate.cases.iter().map(case).collect()
+}
+
+/// The line of a file without an estimate.
+pub fn without(file: &str, ended: Ended, message: &str) -> String {
+    let word = match ended {
+        Ended::Done => "done",
+        Ended::Faulty => "faulty",
+        Ended::Failed => "failed",
+    };
+    let mut cells = vec![file.to_owned(), word.to_owned(), message.to_owned()];
+    cells.resize(COLUMNS.len(), String::new());
+    line(&cells)
+}
+
+fn band(band: Option<&Band>) -> [String; 3] {
+    [
+        number(band.and_then(|band| band.low)),
+        number(band.map(|band| band.nominal)),
+        number(band.and_then(|band| band.high)),
+    ]
+}
+
+fn number(value: Option<f64>) -> String {
+    let finite = value.filter(|value| value.is_finite());
+    finite.map_or_else(String::new, |value| value.to_string())
+}
+
+fn line(cells: &[String]) -> String {
+    let cells: Vec<String> = cells.iter().map(|cell| quoted(cell)).collect();
+    format!("{}\n", cells.join(","))
+}
+
+/// A cell, in quotes where it holds what parts cells; a spreadsheet must not take it for a formula.
+fn quoted(cell: &str) -> String {
+    let is_number = cell.parse::<f64>().is_ok();
+    let formula = !is_number && cell.starts_with(['=', '+', '-', '@']);
+    let cell = if formula {
+        format!("'{cell}")
+    } else {
+        cell.to_owned()
+    };
+    if cell.contains([',', '"', '\n', '\r']) {
+        format!("\"{}\"", cell.replace('"', "\"\""))
+    } else {
+        cell
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn cells_that_would_part_are_quoted_and_formulas_are_text() {
+        assert_eq!(quoted("a, b"), "\"a, b\"");
+        assert_eq!(quoted("6\" pipe"), "\"6\"\" pipe\"");
+        assert_eq!(quoted("=1+1"), "'=1+1");
+        assert_eq!(quoted("-0.5"), "-0.5");
+    }
+
+    #[test]
+    fn every_line_has_every_column() {
+        let count = |line: &str| line.trim_end().split(',').count();
+        assert_eq!(count(&header()), COLUMNS.len());
+        assert_eq!(
+            count(&without("a.toml", Ended::Failed, "no")),
+            COLUMNS.len()
+        );
+    }
+}
