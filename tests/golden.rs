@@ -53,8 +53,8 @@ fn demo_joints_print_what_they_printed() {
     }
     assert_eq!(
         (seen, beyond_cone),
-        (11, 5),
-        "eleven demo joints for the cone, five beyond it"
+        (12, 5),
+        "twelve demo joints for the cone, five beyond it"
     );
     assert!(changed.is_empty(), "changed: {changed:#?}");
 }
