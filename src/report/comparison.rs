@@ -224,7 +224,7 @@ fn sentence(joint: &Compared, best: &Compared, verdict: Verdict) -> String {
     let ratio = of(joint) / of(best);
     let ratio = ratio.max(ratio.recip());
     let apart = if ratio > 2.0 {
-        format!("{} times", four(ratio))
+        format!("a factor of {}", four(ratio))
     } else {
         percent(ratio - 1.0)
     };
