@@ -55,7 +55,7 @@ pub enum Drawing {
     /// Conductance gathered from the hole outwards.
     Cumulative(CumulativePlot),
     /// Resistance against torque.
-    Torque(TorqueSweep),
+    Torque(Box<TorqueSweep>),
     /// Layouts of a search.
     Arrange(Box<ArrangePlot>),
     /// Several joints side by side.

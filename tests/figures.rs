@@ -247,7 +247,7 @@ fn every_drawing() -> Vec<Drawing> {
         Drawing::Plan(furnished(PlanMap::conductance("Box on panel", &field()))),
         Drawing::Cumulative(cumulative(1)),
         Drawing::Cumulative(cumulative(5)),
-        Drawing::Torque(sweep()),
+        Drawing::Torque(Box::new(sweep())),
         Drawing::Fit(Box::new(fitted())),
         Drawing::PressureAndGap(Box::new(pair())),
         Drawing::Plan(furnished(
@@ -440,7 +440,7 @@ fn one_curve_has_an_axis_of_shares_and_several_have_names() {
 
 #[test]
 fn a_sweep_shows_stated_largest_best_and_required() {
-    let texts = texts(&svg(&Drawing::Torque(sweep())).unwrap());
+    let texts = texts(&svg(&Drawing::Torque(Box::new(sweep()))).unwrap());
     for part in [
         "source to sink, K/W",
         "contact only, K/W",
@@ -459,7 +459,7 @@ fn a_lowest_point_inside_the_window_is_named_best() {
     let flag = "best 1.5 N\u{a0}m, worse beyond";
     let mut falling = sweep();
     assert!(!holds(
-        &texts(&svg(&Drawing::Torque(falling.clone())).unwrap()),
+        &texts(&svg(&Drawing::Torque(Box::new(falling.clone()))).unwrap()),
         "worse"
     ));
     for point in &mut falling.points {
@@ -468,7 +468,7 @@ fn a_lowest_point_inside_the_window_is_named_best() {
     }
     falling.best = Some(1.5);
     assert!(!falling.gap_unknown());
-    let texts = texts(&svg(&Drawing::Torque(falling)).unwrap());
+    let texts = texts(&svg(&Drawing::Torque(Box::new(falling))).unwrap());
     assert!(holds(&texts, flag), "{texts:?}");
     assert!(holds(
         &texts,

@@ -101,7 +101,10 @@ impl Torque {
         };
         let found = chain::torque_sweep(&task, &options)?;
         if let Some((format, target)) = figure {
-            target.write(&chain::render(&Drawing::Torque(found.clone()), format)?)?;
+            target.write(&chain::render(
+                &Drawing::Torque(Box::new(found.clone())),
+                format,
+            )?)?;
             console.message(&format!("wrote {}\n", target.path.display()));
         }
         if self.json {

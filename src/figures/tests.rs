@@ -328,14 +328,14 @@ proptest! {
         size in -9.0..9.0_f64,
     ) {
         let mut sweep = sweep(stated, largest, required, 10_f64.powf(size));
-        let sheet = draw(&Drawing::Torque(sweep.clone()));
+        let sheet = draw(&Drawing::Torque(Box::new(sweep.clone())));
         prop_assert_eq!(texts_are_clear(&sheet.unwrap()), Ok(()));
         // With a best torque inside the window there is one more label.
         for point in &mut sweep.points {
             point.source_to_sink.nominal *= 1.0 + point.torque;
         }
         sweep.best = Some(stated.min(largest) / 2.0);
-        let sheet = draw(&Drawing::Torque(sweep));
+        let sheet = draw(&Drawing::Torque(Box::new(sweep)));
         prop_assert_eq!(texts_are_clear(&sheet.unwrap()), Ok(()));
     }
 
@@ -461,7 +461,7 @@ proptest! {
             heat: Some(n(9)),
         };
         let twice = PlanPair { pressure: map.clone(), gap: map.clone() };
-        for drawing in [Drawing::Plan(map), Drawing::PressureAndGap(Box::new(twice)), Drawing::Cumulative(plot), Drawing::Torque(torque), Drawing::Section(Box::new(cut)), Drawing::Faces(Box::new(faces))] {
+        for drawing in [Drawing::Plan(map), Drawing::PressureAndGap(Box::new(twice)), Drawing::Cumulative(plot), Drawing::Torque(Box::new(torque)), Drawing::Section(Box::new(cut)), Drawing::Faces(Box::new(faces))] {
             // An error is as good as a figure; only a panic is not.
             let _ = svg(&drawing);
         }

@@ -26,6 +26,9 @@ pub(super) fn bolts(file: &Record, collector: &mut Collector) -> Option<Bolts> {
     }
 }
 
+/// A value of the filler of an interface.
+type Named = fn(usize) -> What;
+
 /// Values of fillers and faces that are stated with a spread, in the order of the file's parts.
 pub(super) fn stated(file: &Record, plates: &[String]) -> Vec<Uncertain> {
     let mut found = Vec::new();
@@ -38,7 +41,7 @@ pub(super) fn stated(file: &Record, plates: &[String]) -> Vec<Uncertain> {
             }
         };
         let Some(interface) = interface else { continue };
-        let keys: [(&str, fn(usize) -> What); 6] = [
+        let keys: [(&str, Named); 6] = [
             ("conductivity", What::FillerConductivity),
             ("thickness", What::FillerThickness),
             ("bond_line", What::FillerThickness),

@@ -109,14 +109,12 @@ pub fn wrench_torque(tightening: &TorqueTightening, place: Place) -> f64 {
 
 /// Actual over set torque at a place of the tolerance, 1.
 pub fn tool_factor(tightening: &TorqueTightening, place: Place) -> f64 {
-    match tightening.scatter {
-        Some(_) => 1.0,
-        None => {
-            let tolerance = tightening.tolerance;
-            let ends = [1.0 - tolerance, 1.0, 1.0 + tolerance];
-            tightening.tool.at(ends, place.torque)
-        }
+    if tightening.scatter.is_some() {
+        return 1.0;
     }
+    let tolerance = tightening.tolerance;
+    let ends = [1.0 - tolerance, 1.0, 1.0 + tolerance];
+    tightening.tool.at(ends, place.torque)
 }
 
 /// The torque balance of a fastener at a place of its scatter.

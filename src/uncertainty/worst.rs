@@ -60,8 +60,8 @@ struct Search<'a> {
 struct Standing {
     /// 0 at the least force, 1 at the most; none at nominal.
     force: Option<f64>,
-    /// Quantiles by input; those that move the force are not read.
-    others: Vec<f64>,
+    /// Quantiles by input, none at nominal; those that move the force are not read.
+    others: Vec<Option<f64>>,
 }
 
 impl Search<'_> {
@@ -70,7 +70,7 @@ impl Search<'_> {
         let reach = |standing: &Standing| self.value(standing, of).map(|value| sign * value);
         let mut best = Standing {
             force: None,
-            others: vec![0.5; self.inputs.len()],
+            others: vec![None; self.inputs.len()],
         };
         let mut top = reach(&best)?;
         for _ in 0..MOST_ROUNDS {
@@ -80,7 +80,7 @@ impl Search<'_> {
                 if input.moves != Moves::Other {
                     continue;
                 }
-                for quantile in [input.ends[0], 0.5, input.ends[1]] {
+                for quantile in [Some(input.ends[0]), None, Some(input.ends[1])] {
                     let mut tried = best.clone();
                     tried.others[place] = quantile;
                     let value = reach(&tried)?;
@@ -135,14 +135,14 @@ impl Search<'_> {
         let mut at = Realisation::default();
         for (input, other) in self.inputs.iter().zip(&standing.others) {
             let [low, high] = input.ends;
-            let quantile = match (input.moves, standing.force) {
-                (Moves::Other, _) if *other == 0.5 => continue,
-                (Moves::Other, _) => *other,
-                (_, None) => continue,
-                (Moves::MoreForce, Some(force)) => low + force * (high - low),
-                (Moves::LessForce, Some(force)) => high - force * (high - low),
+            let quantile = match input.moves {
+                Moves::Other => *other,
+                Moves::MoreForce => standing.force.map(|force| low + force * (high - low)),
+                Moves::LessForce => standing.force.map(|force| high - force * (high - low)),
             };
-            (input.place)(&mut at, quantile);
+            if let Some(quantile) = quantile {
+                (input.place)(&mut at, quantile);
+            }
         }
         let drawn = self.plan.drawn(&at, &mut self.plan.workspace()).ok()?;
         let value = of.of(&drawn);

@@ -96,7 +96,7 @@ impl Joint {
             } => {
                 move_to(conductivity, What::FillerConductivity(interface));
                 // A stated bond line is both at once.
-                if thinnest == applied {
+                if thinnest.total_cmp(applied).is_eq() {
                     move_to(thinnest, What::FillerThickness(interface));
                 }
                 move_to(applied, What::FillerThickness(interface));

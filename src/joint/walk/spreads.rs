@@ -69,11 +69,10 @@ impl Walk<'_> {
             }
             Form::Table(entries) => self.distribution(stated, entries, measure),
             Form::Text(text) => {
-                let signs = PLUS_MINUS.iter();
-                let halves = signs.filter_map(|sign| text.split_once(sign)).next();
+                let halves = PLUS_MINUS.iter().find_map(|sign| text.split_once(sign));
                 match (halves, text.split_once(TO)) {
                     (Some(halves), _) => self.plus_minus(stated, halves, measure),
-                    (None, Some(ends)) => self.from_to(stated, ends, measure),
+                    (None, Some(ends)) => self.ends_of(stated, ends, measure),
                     (None, None) => self.exact(stated, measure),
                 }
             }
@@ -103,7 +102,7 @@ impl Walk<'_> {
     }
 
     /// `0.8 µm to 1.6 µm`, `0.8 to 1.6 µm`: the same weight everywhere.
-    fn from_to(
+    fn ends_of(
         &mut self,
         stated: Stated<'_>,
         (low, high): (&str, &str),
@@ -225,7 +224,7 @@ impl Walk<'_> {
             return None;
         }
         let shape = match (name.as_deref(), sigma) {
-            (None, None) | (Some("uniform"), None) => Shape::Uniform,
+            (None | Some("uniform"), None) => Shape::Uniform,
             (Some("triangular"), None) => Shape::Triangular,
             (None | Some("normal"), Some(_)) => Shape::Normal,
             (Some("lognormal"), Some(_)) => Shape::LogNormal,

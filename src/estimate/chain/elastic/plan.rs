@@ -101,15 +101,14 @@ impl ElasticPlan<'_> {
     ) -> Drawn {
         let to = self.spread.gauge.departure(conditions);
         let open = self.spread.response.open.as_ref();
-        let moved = match open.filter(|_| to[0] == f64::NEG_INFINITY) {
-            Some(open) => Drawn::of(open),
-            None => {
-                let shift = self.spread.shift(&conditions.forces);
-                let there = self.flat.at(&to);
-                self.moved(std::array::from_fn(|reading| {
-                    there[reading] + shift[reading]
-                }))
-            }
+        let moved = if let Some(open) = open.filter(|_| to[0] == f64::NEG_INFINITY) {
+            Drawn::of(open)
+        } else {
+            let shift = self.spread.shift(&conditions.forces);
+            let there = self.flat.at(&to);
+            self.moved(std::array::from_fn(|reading| {
+                there[reading] + shift[reading]
+            }))
         };
         moved
             .with_form(self.spread.form(to[0], [at.field, at.flatness]))
