@@ -45,7 +45,7 @@ pub enum Format {
 #[derive(Clone, Debug, PartialEq)]
 pub enum Drawing {
     /// A field over the plan of the joint.
-    Plan(PlanMap),
+    Plan(Box<PlanMap>),
     /// Pressure and gap over the same plan.
     PressureAndGap(Box<PlanPair>),
     /// Temperatures of both faying faces on one scale.

@@ -243,16 +243,22 @@ fn fitted() -> FitPlot {
 
 fn every_drawing() -> Vec<Drawing> {
     vec![
-        Drawing::Plan(furnished(PlanMap::pressure("Box on panel", &field()))),
-        Drawing::Plan(furnished(PlanMap::conductance("Box on panel", &field()))),
+        Drawing::Plan(Box::new(furnished(PlanMap::pressure(
+            "Box on panel",
+            &field(),
+        )))),
+        Drawing::Plan(Box::new(furnished(PlanMap::conductance(
+            "Box on panel",
+            &field(),
+        )))),
         Drawing::Cumulative(cumulative(1)),
         Drawing::Cumulative(cumulative(5)),
         Drawing::Torque(Box::new(sweep())),
         Drawing::Fit(Box::new(fitted())),
         Drawing::PressureAndGap(Box::new(pair())),
-        Drawing::Plan(furnished(
+        Drawing::Plan(Box::new(furnished(
             PlanMap::gap("Box on panel", &solved()).expect("a solved field knows its gap"),
-        )),
+        ))),
         arrange::drawing(),
         heat::flux(),
         Drawing::Faces(Box::new(heat::faces(Some(22.0)))),
@@ -570,7 +576,7 @@ fn what_cannot_be_drawn_is_an_error() {
     let with = |change: &dyn Fn(&mut PlanMap)| {
         let mut changed = map();
         change(&mut changed);
-        svg(&Drawing::Plan(changed))
+        svg(&Drawing::Plan(Box::new(changed)))
     };
     assert_eq!(
         with(&|m| m.values.fill(f64::NAN)),
@@ -620,13 +626,13 @@ fn what_cannot_be_drawn_is_an_error() {
     let mut empty = sweep();
     empty.points.clear();
     assert_eq!(
-        svg(&Drawing::Torque(empty)),
+        svg(&Drawing::Torque(Box::new(empty))),
         Err(FigureError::Empty("the sweep"))
     );
     let mut lost = sweep();
     lost.points[2].contact.nominal = f64::NAN;
     assert_eq!(
-        svg(&Drawing::Torque(lost)),
+        svg(&Drawing::Torque(Box::new(lost))),
         Err(FigureError::NotFinite("the sweep"))
     );
 }
@@ -642,10 +648,10 @@ fn lone_and_level_data_are_drawn() {
     let mut cell = PlanMap::pressure("one cell", &field());
     (cell.size, cell.values) = ([1, 1], vec![7e6]);
     for drawing in [
-        Drawing::Torque(one),
+        Drawing::Torque(Box::new(one)),
         Drawing::Cumulative(level),
-        Drawing::Plan(map),
-        Drawing::Plan(cell),
+        Drawing::Plan(Box::new(map)),
+        Drawing::Plan(Box::new(cell)),
     ] {
         texts(&svg(&drawing).unwrap());
         decoded(&png(&drawing).unwrap());

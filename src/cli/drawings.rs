@@ -42,10 +42,10 @@ pub fn of_joint(joint: &Joint, fields: &Fields) -> Vec<(&'static str, Drawing)> 
         ),
         None => (
             PRESSURE,
-            Drawing::Plan(furnish(PlanMap::pressure(&title, field))),
+            Drawing::Plan(Box::new(furnish(PlanMap::pressure(&title, field)))),
         ),
     };
-    let conductance = Drawing::Plan(furnish(PlanMap::conductance(&title, field)));
+    let conductance = Drawing::Plan(Box::new(furnish(PlanMap::conductance(&title, field))));
     let heading = title.clone();
     let cumulative = Drawing::Cumulative(CumulativePlot {
         title,
@@ -60,7 +60,7 @@ pub fn of_joint(joint: &Joint, fields: &Fields) -> Vec<(&'static str, Drawing)> 
     let heat = joint.service.heat;
     if let Some(map) = &fields.heat {
         let flux = furnish(PlanMap::flux(&heading, (field, map)));
-        drawings.push((FLUX, Drawing::Plan(flux)));
+        drawings.push((FLUX, Drawing::Plan(Box::new(flux))));
         let names = joint
             .meeting(fields.interface)
             .map(|plate| plate.name.as_str());

@@ -303,7 +303,7 @@ proptest! {
     ) {
         let window = [10_f64.powf(width), 10_f64.powf(width + aspect)];
         let scale = if logarithmic { Scale::Logarithmic } else { Scale::Linear };
-        let sheet = draw(&Drawing::Plan(plan(window, 10_f64.powf(size), scale, bolts))).unwrap();
+        let sheet = draw(&Drawing::Plan(Box::new(plan(window, 10_f64.powf(size), scale, bolts)))).unwrap();
         prop_assert_eq!(texts_are_clear(&sheet), Ok(()));
     }
 
@@ -461,7 +461,7 @@ proptest! {
             heat: Some(n(9)),
         };
         let twice = PlanPair { pressure: map.clone(), gap: map.clone() };
-        for drawing in [Drawing::Plan(map), Drawing::PressureAndGap(Box::new(twice)), Drawing::Cumulative(plot), Drawing::Torque(Box::new(torque)), Drawing::Section(Box::new(cut)), Drawing::Faces(Box::new(faces))] {
+        for drawing in [Drawing::Plan(Box::new(map)), Drawing::PressureAndGap(Box::new(twice)), Drawing::Cumulative(plot), Drawing::Torque(Box::new(torque)), Drawing::Section(Box::new(cut)), Drawing::Faces(Box::new(faces))] {
             // An error is as good as a figure; only a panic is not.
             let _ = svg(&drawing);
         }

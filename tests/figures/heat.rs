@@ -23,7 +23,7 @@ fn heat_map() -> HeatMap {
 
 pub fn flux() -> Drawing {
     let map = PlanMap::flux("Box on panel", (&solved(), &heat_map()));
-    Drawing::Plan(furnished(map))
+    Drawing::Plan(Box::new(furnished(map)))
 }
 
 pub fn faces(heat: Option<f64>) -> FacePair {
@@ -188,7 +188,7 @@ fn a_minimum_between_swept_torques_is_marked_where_it_lies() {
         source_to_sink: 0.41,
         added_by_joint: 0.01,
     });
-    let texts = texts(&svg(&Drawing::Torque(swept)).unwrap());
+    let texts = texts(&svg(&Drawing::Torque(Box::new(swept))).unwrap());
     assert!(holds(&texts, "minimum, at 1.6 N\u{a0}m"), "{texts:?}");
     assert!(
         holds(&texts, "best 1.6 N\u{a0}m, worse beyond"),
@@ -201,7 +201,7 @@ fn a_joint_that_is_to_resist_is_marked_where_it_resists_most() {
     let mut mount = sweep();
     mount.best = Some(0.25);
     mount.required = Some((0.8, Limit::Least));
-    let texts = texts(&svg(&Drawing::Torque(mount)).unwrap());
+    let texts = texts(&svg(&Drawing::Torque(Box::new(mount))).unwrap());
     let named = "highest that strength allows, at 0.25 N\u{a0}m";
     assert!(holds(&texts, named), "{texts:?}");
 }
