@@ -1,5 +1,6 @@
 //! A joint prepared for the chain, and one run through it.
 
+mod changed;
 mod conditions;
 mod cone;
 mod draw;
@@ -19,6 +20,7 @@ use std::{
     sync::{Arc, OnceLock},
 };
 
+use changed::with_torque;
 pub use conditions::Conditions;
 use cone::ConeModel;
 use elastic::ElasticModel;
@@ -32,7 +34,7 @@ use crate::{
         forces::{self, Group},
         torques::SEPARATION,
     },
-    joint::{Bounds, Fastener, Joint, Medium, Tightening},
+    joint::{Fastener, Joint},
     pressure::Cone,
     resistance::{self, Cells, Path},
 };
@@ -135,107 +137,6 @@ impl<'a> Chain<'a> {
             Model::Cone(model) => Model::Cone(model.levelled(self)?),
             Model::Elastic(model) => Model::Elastic(Box::new(model.levelled(self))),
         })
-    }
-
-    /// The same joint with another torque on one group, N m; plates, cells and grid are shared.
-    ///
-    /// Groups whose preload is stated keep it.
-    pub fn with_torque(&self, group: usize, torque: f64) -> Result<Chain<'static>, Failure> {
-        self.with(with_torque(self.joint(), group, torque))
-    }
-
-    /// The same joint with every bolt at its least or its largest force in service of one case;
-    /// plates and contact are shared.
-    ///
-    /// Checked: `force_ends_are_those_of_the_band`.
-    pub fn at_force_end(&self, case: usize, end: ForceEnd) -> Result<Chain<'static>, Failure> {
-        let mut joint = self.joint().clone();
-        // The ends hold every loss and every load already.
-        joint.losses = None;
-        for (fastener, group) in joint.fasteners.iter_mut().zip(&self.groups) {
-            let band = group.service_band(self.joint(), fastener, case);
-            let force = match end {
-                ForceEnd::Least => band.low,
-                ForceEnd::Largest => band.high,
-            };
-            fastener.tightening = Tightening::Preload(Bounds::exact(force.unwrap_or(band.nominal)));
-            fastener.axial_load = None;
-        }
-        let mut chain = Chain {
-            joint: Cow::Owned(joint),
-            groups: self.groups.iter().map(Group::held).collect(),
-            group_of: self.group_of.clone(),
-            model: self.model.clone(),
-            error: self.error.clone(),
-        };
-        chain.model = chain.levelled()?;
-        Ok(chain)
-    }
-
-    /// The same joint with a group tightened or graded otherwise; plates, cells and grid are shared, so
-    /// that places, holes and seats must be the same.
-    pub(crate) fn with_fastener(
-        &self,
-        group: usize,
-        fastener: Fastener,
-    ) -> Result<Chain<'static>, Failure> {
-        let mut joint = self.joint().clone();
-        joint.fasteners[group] = fastener;
-        let prepared = Group::new(&joint, &joint.fasteners[group])?;
-        let mut chain = Chain {
-            joint: Cow::Owned(joint),
-            groups: self.groups.clone(),
-            group_of: self.group_of.clone(),
-            model: self.model.clone(),
-            error: self.error.clone(),
-        };
-        chain.groups[group] = prepared;
-        chain.model = chain.levelled()?;
-        Ok(chain)
-    }
-
-    /// The same joint in vacuum; plates, cells and grid are shared.
-    pub fn in_vacuum(&self) -> Result<Chain<'static>, Failure> {
-        self.in_medium(Medium::Vacuum)
-    }
-
-    /// The same joint in another medium; plates, cells, grid and contact are shared.
-    pub fn in_medium(&self, medium: Medium) -> Result<Chain<'static>, Failure> {
-        let mut joint = self.joint().clone();
-        joint.service.medium = medium;
-        self.with(joint)
-    }
-
-    /// The same joint without some bolts, by their numbers from 1; on a solved field grid and plates
-    /// are shared.
-    pub fn without(&self, numbers: &[usize]) -> Result<Chain<'static>, Failure> {
-        let joint = self.joint().without(numbers)?;
-        let mut chain = Chain {
-            joint: Cow::Owned(joint),
-            groups: self.groups.clone(),
-            group_of: self.group_of.clone(),
-            model: self.model.clone(),
-            error: Arc::default(),
-        };
-        chain.model = match &self.model {
-            Model::Cone(_) => Model::Cone(ConeModel::new(chain.joint())?),
-            Model::Elastic(model) => Model::Elastic(Box::new(model.afresh())),
-        };
-        chain.model = chain.levelled()?;
-        Ok(chain)
-    }
-
-    /// The same plates and places in another joint.
-    fn with(&self, joint: Joint) -> Result<Chain<'static>, Failure> {
-        let mut chain = Chain {
-            joint: Cow::Owned(joint),
-            groups: self.groups.clone(),
-            group_of: self.group_of.clone(),
-            model: self.model.clone(),
-            error: self.error.clone(),
-        };
-        chain.model = chain.levelled()?;
-        Ok(chain)
     }
 
     /// The field as users name it.
@@ -618,13 +519,4 @@ impl<'a> Chain<'a> {
             Model::Elastic(model) => model.gas_share(self),
         }
     }
-}
-
-/// A joint with another torque on one group; a stated preload stays.
-fn with_torque(joint: &Joint, group: usize, torque: f64) -> Joint {
-    let mut changed = joint.clone();
-    if let Tightening::Torque(tightening) = &mut changed.fasteners[group].tightening {
-        tightening.torque = torque;
-    }
-    changed
 }

@@ -95,7 +95,7 @@ fn one(node: Node, known: &[Variant]) -> Result<Variant, Box<Fault>> {
     if known.iter().any(|variant| variant.name == text) {
         return Err(Box::new(
             fault(
-                "file/duplicate-name",
+                "file/duplicate",
                 &name.span,
                 format!("two variants are called `{}`", short(&text)),
             )

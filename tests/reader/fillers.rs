@@ -136,7 +136,10 @@ fn losses_not_asked_for_are_an_assumption() {
         "none at nominal; guide settling, 5 % relaxation and 5 % for bolts tightened one after another (10 % on a soft \
          layer) in the low force"
     );
-    assert_eq!(assumed.why, "not stated");
+    assert_eq!(
+        assumed.why,
+        "not stated; tighten crosswise in several passes and once more after settling"
+    );
     assert_eq!(
         told(&(plain() + "\n[losses]\nsettling = \"guide\"\n")),
         None
