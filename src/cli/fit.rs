@@ -40,9 +40,9 @@ Examples:
   ringsum fit joint.toml points.csv --unknown roughness
   ringsum fit joint.toml points.csv --unknown plate.lid.bow --from \"0 µm\" --to \"60 µm\"";
 
-/// Fit own measurements: a law with its scatter for [measured], or one unknown of a joint
+/// Fit own measurements: a law with its scatter for `[measured]`, or one unknown of a joint
 ///
-/// Without --unknown a power law is laid through the readings and printed as a [measured] block.
+/// Without --unknown a power law is laid through the readings and printed as a `[measured]` block.
 /// With it the joint's model is held against readings of its conductance.
 #[derive(Debug, Args)]
 #[command(after_help = EXAMPLES)]
@@ -94,7 +94,7 @@ pub struct Fit {
         allow_hyphen_values = true
     )]
     to: Option<String>,
-    /// Planes of the readings: contact, node-to-node, added or source-to-sink [default]
+    /// Planes of the readings: contact, node-to-node, added or source-to-sink (default)
     #[arg(
         long,
         value_enum,
@@ -117,7 +117,7 @@ pub struct Fit {
     /// Override a field of the joint: --set 'plate.box.thickness="6 mm"'
     #[arg(long = "set", value_name = "KEY=VALUE", requires = "unknown")]
     sets: Vec<String>,
-    /// Write the [measured] block to a file
+    /// Write the `[measured]` block to a file
     #[arg(long, value_name = "FILE", conflicts_with = "unknown")]
     out: Option<PathBuf>,
     /// Draw readings and law, or the likelihood, to a file that ends in .svg or .png

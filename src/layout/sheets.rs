@@ -3,7 +3,7 @@
 //! Without bolts the sheets are one linear system, the same for every layout. It is factored once;
 //! each place of a bolt is solved once, and a layout of `n` bolts is `n` equations. The heat of a
 //! bolt leaves and enters over a smooth kernel of one radius for all sizes; what happens within it
-//! is the matter of [`Link`](crate::layout::bolt::Link).
+//! is the matter of [`crate::layout::bolt::Link`].
 
 mod grid;
 
