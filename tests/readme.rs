@@ -71,7 +71,7 @@ fn every_block_runs_and_prints_what_it_shows() {
         }
         ran += 1;
     }
-    assert_eq!(ran, 13, "commands of the README that ran");
+    assert_eq!(ran, 14, "commands of the README that ran");
 }
 
 fn copy(from: &Path, to: &Path) {
