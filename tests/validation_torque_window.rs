@@ -164,13 +164,13 @@ fn the_knee_has_nine_tenths_of_the_conductance_at_the_best() {
 
 #[test]
 fn a_shut_window_tries_changes_one_at_a_time() {
-    // A rise that is met at the largest torque of the sweep alone, beyond strength.
+    // A rise that is met at the first row beyond strength.
     let open = swept(&joint("1000 K", "0 N"), 5, 0.9);
-    let [.., before, last] = open.points.as_slice() else {
-        panic!("five rows");
-    };
-    let middle = |of: fn(&ringsum::estimate::TorquePoint) -> f64| 0.5 * (of(before) + of(last));
-    let high = middle(|point| point.source_to_sink.high.unwrap());
+    let mut rows = open.points.iter();
+    let beyond = rows
+        .find(|point| !point.passes)
+        .expect("rows go beyond strength");
+    let high = beyond.source_to_sink.high.expect("draws were made");
     let joint = joint(&format!("{} K", 20.0 * high), "0 N");
     let window = swept(&joint, 5, 0.9).window;
     assert!(window.both.is_none(), "{window:?}");
