@@ -7,3 +7,5 @@ mod bands;
 mod coverage;
 #[path = "validation_draws/plan.rs"]
 mod plan;
+#[path = "validation_draws/remade.rs"]
+mod remade;

@@ -8,6 +8,7 @@ mod elastic;
 mod form;
 mod geometry;
 mod levels;
+mod remade;
 mod temperatures;
 mod warmth;
 
@@ -172,7 +173,7 @@ impl<'a> Chain<'a> {
     pub fn state(&self, case: usize, at: &Realisation) -> Result<State, Failure> {
         let conditions = self.conditions(case, at)?;
         let path = match &self.model {
-            Model::Cone(model) => model.path(case, &conditions, at),
+            Model::Cone(model) => model.path(self, case, (&conditions, at))?,
             Model::Elastic(model) => model.path(self, case, (&conditions, at))?,
         };
         let path = with_error(path, at.numerical);
@@ -189,7 +190,7 @@ impl<'a> Chain<'a> {
     /// sink; none where every draw is solved or none was made.
     pub fn draw_error(&self, case: usize) -> Option<f64> {
         match &self.model {
-            Model::Cone(_) => None,
+            Model::Cone(model) => model.draw_error(case),
             Model::Elastic(model) => model.draw_error(case),
         }
     }
@@ -203,7 +204,7 @@ impl<'a> Chain<'a> {
     /// Works out what the draws of a case need, once; to be called before draws run side by side.
     pub fn expect_draws(&self, case: usize) -> Result<(), Failure> {
         match &self.model {
-            Model::Cone(_) => Ok(()),
+            Model::Cone(model) => model.expect_draws(self, case),
             Model::Elastic(model) => model.expect_draws(self, case),
         }
     }

@@ -75,6 +75,13 @@ impl Group {
         })
     }
 
+    /// The same group in a joint of other plates; where no temperature moves the force, none does there.
+    pub fn anew(&self, joint: &Joint, fastener: &Fastener) -> Result<Self, Failure> {
+        let made = Self::new(joint, fastener)?;
+        let still = self.growth.iter().all(|growth| *growth == 0.0);
+        Ok(if still { made.held() } else { made })
+    }
+
     /// The same where no temperature moves the force any more.
     pub fn held(&self) -> Self {
         Self {

@@ -1,11 +1,12 @@
 //! What a joint states that the closed-form pressure cone cannot carry.
 
-use crate::joint::{Compliance, FaceFriction, HeadModel, Joint, Outline, Plate, Sag};
+use crate::joint::{Compliance, FaceFriction, HeadModel, Joint, Outline, Plate, Sag, What};
 
 impl Joint {
     /// Fields of the file that need the elastic solution of the whole joint, each with the reason.
     ///
-    /// A bow is not among them: the cone passes over it with a caution.
+    /// A bow is not among them: the cone passes over it with a caution. A spread of its height is: the
+    /// draws could not honour it.
     ///
     /// Checked: `a_plain_joint_needs_no_elastic_field`, `each_field_beyond_the_cone_is_named`.
     pub fn needs_elastic(&self) -> Vec<(String, &'static str)> {
@@ -16,7 +17,7 @@ impl Joint {
                 "the cone knows two plates, and these are more",
             ));
         }
-        for plate in &self.plates {
+        for (index, plate) in self.plates.iter().enumerate() {
             let field = |key: &str| format!("plate.{}.{key}", plate.name);
             let stated = [
                 (
@@ -56,6 +57,16 @@ impl Joint {
                         .is_some_and(|sag| *sag != Sag::Curvature(0.0)),
                     "sag",
                     "the cone takes faces as flat",
+                ),
+                (
+                    self.spread_of(What::Bow(index)).is_some(),
+                    "bow.height",
+                    "the cone takes faces as flat, so that no spread of the height can move it",
+                ),
+                (
+                    self.spreads_flatness(index),
+                    "finish.flatness",
+                    "the cone takes faces as flat, so that no spread of the height can move it",
                 ),
                 (
                     plate.material.through.is_some(),

@@ -111,6 +111,19 @@ fn radiates_among(parts: &[CooledPart], records: &[Record], collector: &mut Coll
     let (Some(first), second) = (radiating.next(), radiating.next()) else {
         return;
     };
+    for film in records {
+        collector.require(film.stated_spread("film").is_none(), || {
+            fault(
+                "file/conflict",
+                &film.span("film"),
+                "a film with a spread stands beside a radiating back",
+            )
+            .expecting("expected a film without a spread")
+            .help(
+                "the temperature of the sink surface follows from the balance of both and is one number: state each                  end of the film in a file of its own, or a [[variant]]",
+            )
+        });
+    }
     let place = second.unwrap_or(first).span("radiation");
     collector.require(second.is_none() && parts.iter().all(whole), || {
         fault(

@@ -286,7 +286,7 @@ fn engagement(
     }
     let length = match table.number("length") {
         Some(length) => {
-            if let Some(thickness) = far.thickness {
+            if let Some([thickness, _]) = far.thickness_ends() {
                 let fits = length <= thickness * (1.0 + 1e-9);
                 collector.require(fits, || too_long(table, length, (&far.name, thickness)));
             }

@@ -25,7 +25,7 @@ pub(super) fn plates(plates: &[PlateDraft], collector: &mut Collector) {
     for plate in plates {
         let name = &plate.name;
         let span = |key: &str| place(&plate.record, key);
-        if let Some(thickness) = plate.thickness {
+        if let Some([_, thickness]) = plate.thickness_ends() {
             let what = format!("plate `{name}` is {} thick", length(thickness));
             within(
                 (&what, &span("thickness")),
@@ -63,7 +63,7 @@ fn plan(plate: &PlateDraft, outline: &Outline, collector: &mut Collector) {
     let [longest, shortest] = [sides[0].max(sides[1]), sides[0].min(sides[1])];
     let what = format!("plate `{}` is {} long", plate.name, length(longest));
     within((&what, &span), (longest, LARGEST_PLAN), collector);
-    let Some(thickness) = plate.thickness else {
+    let Some([_, thickness]) = plate.thickness_ends() else {
         return;
     };
     let what = format!(

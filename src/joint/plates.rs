@@ -56,6 +56,13 @@ impl PlateDraft {
         Some((self.outline.as_ref()?, self.origin?))
     }
 
+    /// Least and largest thickness, m.
+    pub(super) fn thickness_ends(&self) -> Option<[f64; 2]> {
+        let thickness = self.thickness?;
+        let stated = self.record.stated_spread("thickness");
+        Some(stated.map_or([thickness; 2], |bounds| [bounds.low, bounds.high]))
+    }
+
     /// The finished plate.
     pub(super) fn finished(self) -> Option<Plate> {
         let lost = |key: &str, is_none: bool| is_none && self.record.has(key);

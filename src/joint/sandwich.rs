@@ -43,7 +43,11 @@ pub(super) fn read(plate: &Record, own: &Own, collector: &mut Collector) -> Opti
         }
     }
     let face_sheet = record.number("face_sheet");
-    if let (Some(sheet), Some(whole)) = (face_sheet, plate.number("thickness")) {
+    let thinnest = plate
+        .stated_spread("thickness")
+        .map(|bounds| bounds.low)
+        .or(plate.number("thickness"));
+    if let (Some(sheet), Some(whole)) = (face_sheet, thinnest) {
         collector.require(sheet < 0.5 * whole, || {
             refused(
                 &record.span("face_sheet"),

@@ -181,8 +181,8 @@ pub static SERVICE: Section = Section {
         .required(),
         field(
             "pressure",
-            Kind::Quantity(Quantity::Pressure),
-            "absolute pressure of the gas",
+            Kind::Spread(Measure::Quantity(Quantity::Pressure)),
+            "absolute pressure of the gas, or its range",
             "\"101325 Pa\"",
         )
         .within(1e-9, 1e8)

@@ -1,6 +1,6 @@
 //! How inputs scatter together, and which values carry a spread of their own.
 
-use crate::joint::{Bolts, Uncertain, What, collector::Collector, record::Record};
+use crate::joint::{Bolts, Bounds, Facing, Uncertain, What, collector::Collector, record::Record};
 
 /// Reads whether the bolts scatter alike; none when it is faulty.
 pub(super) fn bolts(file: &Record, collector: &mut Collector) -> Option<Bolts> {
@@ -29,7 +29,8 @@ pub(super) fn bolts(file: &Record, collector: &mut Collector) -> Option<Bolts> {
 /// A value of the filler of an interface.
 type Named = fn(usize) -> What;
 
-/// Values of fillers and faces that are stated with a spread, in the order of the file's parts.
+/// Values that are stated with a spread of their own, in the order of the file's parts: fillers, plates,
+/// sink, gas.
 pub(super) fn stated(file: &Record, plates: &[String]) -> Vec<Uncertain> {
     let mut found = Vec::new();
     for record in file.records("filler") {
@@ -56,11 +57,55 @@ pub(super) fn stated(file: &Record, plates: &[String]) -> Vec<Uncertain> {
             }));
         }
     }
+    let mut take = |bounds: Option<Bounds>, what: What| {
+        found.extend(bounds.map(|bounds| Uncertain { what, bounds }));
+    };
     for (index, plate) in file.records("plate").iter().enumerate() {
-        found.extend(plate.stated_spread("emissivity").map(|bounds| Uncertain {
-            what: What::Emissivity(index),
-            bounds,
-        }));
+        take(plate.stated_spread("emissivity"), What::Emissivity(index));
+        take(plate.stated_spread("thickness"), What::Thickness(index));
+        let bow = plate.record("bow");
+        take(
+            bow.and_then(|bow| bow.stated_spread("height")),
+            What::Bow(index),
+        );
+        // Beside a known shape the height of the tolerance says nothing.
+        if bow.is_some() || plate.has("flatness_map") {
+            continue;
+        }
+        let of = |key: &str| plate.record(key)?.stated_spread("flatness");
+        let between = index > 0 && index + 1 < plates.len();
+        let facing = if index == 0 {
+            Facing::Cold
+        } else {
+            Facing::Warm
+        };
+        take(of("finish"), What::Flatness(index, facing));
+        if between {
+            // Both faces of a plate between others are as its finish says unless one is stated apart.
+            let below = if plate.has("finish_below") {
+                "finish_below"
+            } else {
+                "finish"
+            };
+            take(of(below), What::Flatness(index, Facing::Cold));
+        }
     }
+    let cooled = file
+        .records("plate")
+        .last()
+        .map(|last| last.records("cooled"));
+    let films = cooled
+        .into_iter()
+        .flatten()
+        .filter(|part| part.has("film"))
+        .enumerate();
+    for (number, part) in films {
+        take(part.stated_spread("film"), What::Film(number));
+    }
+    let service = file.record("service");
+    take(
+        service.and_then(|service| service.stated_spread("pressure")),
+        What::GasPressure,
+    );
     found
 }

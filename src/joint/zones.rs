@@ -2,7 +2,7 @@
 
 use crate::{
     joint::{
-        CooledPart, Cooling, Joint, Plate, Sink, Zone,
+        CooledPart, Cooling, Joint, Plate, Sink, What, Zone,
         collector::{Collector, Wording, fault},
         record::Record,
         tree::Span,
@@ -142,7 +142,12 @@ fn above_zero(joint: &Joint, last: &Record, collector: &mut Collector) {
             })
             .collect(),
     };
-    let Some(films) = films else { return };
+    let Some(mut films) = films else { return };
+    for (number, (film, _)) in films.iter_mut().enumerate() {
+        if let Some(bounds) = joint.spread_of(What::Film(number)) {
+            *film = bounds.low;
+        }
+    }
     let best = films.iter().map(|(film, _)| *film).fold(0.0, f64::max);
     let whole: f64 = films.iter().map(|(_, area)| area).sum();
     let drop = heat / (best * whole);

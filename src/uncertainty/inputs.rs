@@ -4,7 +4,7 @@ use std::sync::Arc;
 
 use crate::{
     estimate::{Chain, Realisation},
-    joint::{Bounds, Finish, Friction, Medium, Tightening, TorqueTightening, What},
+    joint::{Bounds, Finish, Friction, Joint, Medium, Tightening, TorqueTightening, What},
     numerics::distribution::deviations,
 };
 
@@ -248,8 +248,22 @@ fn own(bolt: usize, count: usize) -> Input {
     }
 }
 
+/// Name and remedy of a plate's input: of the first plate, the last and those between.
+fn of_plate(
+    joint: &Joint,
+    plate: usize,
+    told: [(&'static str, &'static str); 3],
+) -> (&'static str, &'static str) {
+    match plate {
+        0 => told[0],
+        _ if plate + 1 == joint.plates.len() => told[1],
+        _ => told[2],
+    }
+}
+
 /// A value that the file states with a spread.
-fn stated(what: What, (index, count): (usize, usize)) -> Input {
+fn stated(joint: &Joint, index: usize) -> Input {
+    let (what, count) = (joint.uncertain[index].what, joint.uncertain.len());
     let (name, remedy) = match what {
         What::FillerConductivity(_) => (
             "conductivity of the filler",
@@ -268,6 +282,68 @@ fn stated(what: What, (index, count): (usize, usize)) -> Input {
             "ask the maker for the largest particle, or measure the bond line",
         ),
         What::Emissivity(_) => ("emissivity", "measure the emissivity of the faces"),
+        What::Thickness(plate) => of_plate(
+            joint,
+            plate,
+            [
+                (
+                    "thickness of the warm plate",
+                    "measure the warm plate, or call out a closer tolerance",
+                ),
+                (
+                    "thickness of the cold plate",
+                    "measure the cold plate, or call out a closer tolerance",
+                ),
+                (
+                    "thickness of the plates between",
+                    "measure the plates between, or call out closer tolerances",
+                ),
+            ],
+        ),
+        What::Bow(plate) => of_plate(
+            joint,
+            plate,
+            [
+                (
+                    "bow of the warm plate",
+                    "measure the warm face, and state a flatness_map",
+                ),
+                (
+                    "bow of the cold plate",
+                    "measure the cold face, and state a flatness_map",
+                ),
+                (
+                    "bow of the plates between",
+                    "measure the plates between, and state a flatness_map",
+                ),
+            ],
+        ),
+        What::Flatness(plate, _) => of_plate(
+            joint,
+            plate,
+            [
+                (
+                    "height of flatness, warm face",
+                    "measure the warm face, or call out a closer flatness",
+                ),
+                (
+                    "height of flatness, cold face",
+                    "measure the cold face, or call out a closer flatness",
+                ),
+                (
+                    "height of flatness, plates between",
+                    "measure the plates between, or call out a closer flatness",
+                ),
+            ],
+        ),
+        What::Film(_) => (
+            "film of the sink",
+            "measure the film on a heated dummy in the flow of service, or hold the flow closer",
+        ),
+        What::GasPressure => (
+            "pressure of the gas",
+            "measure or hold the pressure of service",
+        ),
     };
     Input {
         name,
@@ -331,7 +407,8 @@ pub fn inputs(chain: &Chain) -> Vec<Input> {
         found.push(FILLER.normal());
     }
     let open = (0..joint.interfaces()).any(|interface| joint.filler(interface).is_none());
-    if open && matches!(joint.service.medium, Medium::Gas { .. }) {
+    let in_gas = open && matches!(joint.service.medium, Medium::Gas { .. });
+    if in_gas {
         found.push(GAS.normal());
     }
     found.extend(CONDUCTIVITY.iter().map(|known| known.bounded(Moves::Other)));
@@ -346,9 +423,9 @@ pub fn inputs(chain: &Chain) -> Vec<Input> {
     } else {
         found.push(FIELD.bounded(Moves::Other));
     }
-    let count = joint.uncertain.len();
-    let stated_ones = joint.uncertain.iter().enumerate();
-    found.extend(stated_ones.map(|(index, each)| stated(each.what, (index, count))));
+    let moves = |index: &usize| joint.uncertain[*index].what != What::GasPressure || in_gas;
+    let numbers = (0..joint.uncertain.len()).filter(moves);
+    found.extend(numbers.map(|index| stated(joint, index)));
     if let Some(error) = chain.known_error().filter(|error| *error > 0.0) {
         found.push(numerical(error));
     }

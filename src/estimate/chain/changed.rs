@@ -80,6 +80,26 @@ impl Chain<'_> {
         self.changed(joint, (self.groups.clone(), model), Arc::default())
     }
 
+    /// The joint whose file states other values in place of some spreads, by their numbers, SI; the contact
+    /// is shared where none of them moves it.
+    pub(super) fn remade(&self, values: &[(usize, f64)]) -> Result<Chain<'static>, Failure> {
+        let joint = self.joint().remade(values);
+        let bolted = joint.fasteners.iter().zip(&self.groups);
+        let groups = bolted
+            .map(|(fastener, group)| group.anew(&joint, fastener))
+            .collect::<Result<Vec<Group>, Failure>>()?;
+        let model = match &self.model {
+            Model::Cone(_) => Model::Cone(ConeModel::new(&joint)?),
+            Model::Elastic(model) => {
+                let stated = &self.joint().uncertain;
+                let moved = |(index, _): &(usize, f64)| stated[*index].what.moves_contact();
+                let same = !values.iter().any(moved);
+                Model::Elastic(Box::new(model.remade(&joint, same)?))
+            }
+        };
+        self.changed(joint, (groups, model), Arc::default())
+    }
+
     /// The same plates and places in another joint.
     fn with(&self, joint: Joint) -> Result<Chain<'static>, Failure> {
         let same = (self.groups.clone(), self.model.clone());

@@ -1,12 +1,23 @@
 //! The chain on closed forms and networks: cones, ring sums, plan grid.
 
-use std::{borrow::Cow, sync::Arc};
+use std::{
+    borrow::Cow,
+    sync::{Arc, OnceLock},
+};
 
 use crate::{
     diagnostic::Caution,
     estimate::{
         Chain, Failure, PressureResult, Realisation, RingRow,
-        chain::{conditions::Conditions, form::with_form, geometry::Geometry, levels::Level},
+        chain::{
+            Model,
+            conditions::Conditions,
+            elastic::moved,
+            form::with_form,
+            geometry::Geometry,
+            levels::Level,
+            remade::{Remade, Remaker, Stated},
+        },
     },
     joint::{Bounds, Joint},
     pressure::{Cone, Pair},
@@ -22,6 +33,16 @@ pub(super) struct ConeModel {
     levels: Vec<Level>,
     /// Model form, as a factor on what the joint adds.
     form: Bounds,
+    /// What stated values do that make another joint, for each case, once it has been asked for; empty
+    /// where there are none.
+    remade: Vec<Arc<OnceLock<Arc<Remade>>>>,
+}
+
+/// A case whose joint is solved under other values.
+struct Beside<'a> {
+    model: &'a ConeModel,
+    chain: &'a Chain<'a>,
+    case: usize,
 }
 
 impl ConeModel {
@@ -30,12 +51,20 @@ impl ConeModel {
             geometry: Arc::new(Geometry::new(joint)?),
             levels: Vec::new(),
             form: Bounds::exact(1.0),
+            remade: Vec::new(),
         })
     }
 
     /// The same plates with calibration and model form for the forces and the medium of a chain.
     pub(super) fn levelled(&self, chain: &Chain) -> Result<Self, Failure> {
+        let remakes = !chain.joint().remaking().is_empty();
+        let cases = chain.joint().service.cases.len();
         Ok(Self {
+            remade: if remakes {
+                (0..cases).map(|_| Arc::default()).collect()
+            } else {
+                Vec::new()
+            },
             levels: self.calibrated(chain, &self.levels)?,
             form: self.form_bounds(chain)?,
             geometry: self.geometry.clone(),
@@ -51,7 +80,60 @@ impl ConeModel {
     }
 
     /// The path of a case at one realisation, model form applied.
-    pub(super) fn path(&self, case: usize, conditions: &Conditions, at: &Realisation) -> Path {
+    pub(super) fn path(
+        &self,
+        chain: &Chain,
+        case: usize,
+        (conditions, at): (&Conditions, &Realisation),
+    ) -> Result<Path, Failure> {
+        let path = self.alone(case, conditions, at);
+        if at.stated.is_empty() {
+            return Ok(path);
+        }
+        let Some(remade) = self.remade(chain, case)? else {
+            return Ok(path);
+        };
+        let whole = |forces: &[f64]| forces.iter().sum::<f64>();
+        let nominal = whole(&chain.nominal_forces(case, chain.joint()));
+        let force = (whole(&conditions.forces) / nominal).ln();
+        Ok(moved(&path, &remade.shift(force, &at.stated)))
+    }
+
+    /// What stated values of a case do that make another joint; none where there are none.
+    ///
+    /// Two threads may work it out at once; waiting for each other could take for ever, since it is
+    /// worked out on all cores.
+    fn remade(&self, chain: &Chain, case: usize) -> Result<Option<&Remade>, Failure> {
+        let Some(slot) = self.remade.get(case) else {
+            return Ok(None);
+        };
+        if slot.get().is_none() {
+            let nominal: f64 = chain.nominal_forces(case, chain.joint()).iter().sum();
+            let beside = Beside {
+                model: self,
+                chain,
+                case,
+            };
+            let range = chain.force_range(case, nominal);
+            if let Some(found) = Remade::through(chain.joint(), range, &beside)? {
+                slot.get_or_init(|| Arc::new(found));
+            }
+        }
+        Ok(slot.get().map(Arc::as_ref))
+    }
+
+    /// Works out what the draws of a case need.
+    pub(super) fn expect_draws(&self, chain: &Chain, case: usize) -> Result<(), Failure> {
+        self.remade(chain, case).map(|_| ())
+    }
+
+    /// Error of what the draws of a case read between solved joints, where they do.
+    pub(super) fn draw_error(&self, case: usize) -> Option<f64> {
+        Some(self.remade.get(case)?.get()?.error)
+    }
+
+    /// The path without the stated values that make another joint.
+    fn alone(&self, case: usize, conditions: &Conditions, at: &Realisation) -> Path {
         let solved = self.cells().solve(&self.clamped(conditions).load());
         let mut path = match self.levels.get(case) {
             Some(level) => level.calibration.applied(solved),
@@ -131,5 +213,52 @@ impl ConeModel {
             }
         }
         found
+    }
+}
+
+impl Beside<'_> {
+    /// The cone of the joint of some values under its conditions at a realisation, forces times a factor
+    /// given as its logarithm.
+    fn solved(&self, values: &[Stated], at: (&Realisation, &[f64])) -> Result<Vec<Path>, Failure> {
+        let through = |model: &ConeModel, chain: &Chain| {
+            let (at, forces) = at;
+            let conditions = chain.conditions(self.case, at)?;
+            let path = |force: &f64| {
+                let mut under = conditions.clone();
+                for each in &mut under.forces {
+                    *each *= force.exp();
+                }
+                model.alone(self.case, &under, at)
+            };
+            Ok(forces.iter().map(path).collect())
+        };
+        if values.is_empty() {
+            return through(self.model, self.chain);
+        }
+        let other = self.chain.remade(values)?;
+        match &other.model {
+            Model::Cone(model) => through(model, &other),
+            Model::Elastic(_) => unreachable!("a cone is remade as a cone"),
+        }
+    }
+}
+
+impl Remaker<Failure> for Beside<'_> {
+    fn paths(&self, values: &[Stated], forces: &[f64]) -> Result<Vec<Path>, Failure> {
+        self.solved(values, (&Realisation::default(), forces))
+    }
+
+    fn probed(&self, values: &[Stated], (force, side): (f64, f64)) -> Result<[Path; 2], Failure> {
+        let at = Realisation {
+            law: 0.8 * side,
+            gas: -0.6 * side,
+            conductivity: [-0.6 * side, 0.7 * side],
+            ..Realisation::default()
+        };
+        let solved = |values: &[Stated]| {
+            let paths = self.solved(values, (&at, &[force]))?;
+            Ok::<Path, Failure>(paths[0].clone())
+        };
+        Ok([solved(&[])?, solved(values)?])
     }
 }

@@ -81,7 +81,10 @@ impl Chain<'_> {
     /// The plan of the draws of a case; on a solved field this works out their surfaces, once.
     pub fn draw_plan(&self, case: usize) -> Result<DrawPlan<'_>, Failure> {
         let (outlook, field) = match &self.model {
-            Model::Cone(_) => (Outlook::of(self, case, &self.cold(case))?, Field::Cone),
+            Model::Cone(model) => {
+                model.expect_draws(self, case)?;
+                (Outlook::of(self, case, &self.cold(case))?, Field::Cone)
+            }
             Model::Elastic(model) => {
                 let (outlook, plan) = model.plan(self, case)?;
                 (outlook, Field::Elastic(Box::new(plan)))
@@ -109,7 +112,8 @@ impl DrawPlan<'_> {
         let found = match (&self.field, &self.chain.model) {
             (Field::Elastic(plan), _) => plan.drawn(conditions, at),
             (Field::Cone, Model::Cone(model)) => {
-                Drawn::of(&model.path(self.case, conditions, at)).with_error(at.numerical)
+                let path = model.path(self.chain, self.case, (conditions, at))?;
+                Drawn::of(&path).with_error(at.numerical)
             }
             (Field::Cone, Model::Elastic(_)) => unreachable!("the plan is of this chain"),
         };

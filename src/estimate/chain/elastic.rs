@@ -5,6 +5,7 @@ mod flat;
 mod level;
 mod pattern;
 mod plan;
+mod remade;
 mod response;
 mod rings;
 mod round;
@@ -27,6 +28,7 @@ use crate::{
 use columns::Columns;
 use level::{Level, asked, coarser};
 pub(super) use plan::ElasticPlan;
+pub(super) use response::{LEAST_FORCE, Readings, moved, readings};
 use round::Round;
 pub(super) use solver::Solved;
 use solver::{Factors, Solver};
@@ -115,6 +117,15 @@ impl ElasticModel {
             medium: self.medium.clone(),
             parent: Vec::new(),
         }
+    }
+
+    /// The plates of a joint that differs in thickness, bow or film; what is known of the contact goes
+    /// along where it is the same.
+    pub(super) fn remade(&self, joint: &Joint, same_contact: bool) -> Result<Self, Failure> {
+        Ok(Self {
+            solver: self.solver.remade(joint, same_contact)?,
+            ..self.afresh()
+        })
     }
 
     /// The spread of a case with its medium, where one is known.
@@ -273,14 +284,21 @@ impl ElasticModel {
         let Some(solved) = &case.solved else {
             // Without force in the nominal state there is nothing to move from: the draws and the
             // nominal stand on the ground level.
-            return Ok(spread.response.alone(&to));
+            let shift = spread.shift((&conditions.forces, to[0]), &at.stated);
+            let base = &spread.response.base;
+            return Ok(spread
+                .response
+                .shifted(base, (&response::NOMINAL, &to), &shift));
         };
         let (there, here) = (
-            spread.shift(&conditions.forces),
-            spread.shift(&case.conditions.forces),
+            spread.shift((&conditions.forces, to[0]), &at.stated),
+            spread.shift((&case.conditions.forces, from[0]), &[]),
         );
         let shift = std::array::from_fn(|reading| there[reading] - here[reading]);
-        let places = [at.field, at.flatness];
+        let places = [
+            at.field,
+            at.flatness * chain.joint().flatness_factor(&at.stated),
+        ];
         Ok(spread.moved(solved.path(), (&from, &to), (&shift, places)))
     }
 

@@ -1,6 +1,9 @@
 //! Values that the file states with a spread of their own, and how bolts scatter together.
 
-use crate::joint::{Bounds, FillerKind, Joint};
+use crate::joint::{Bounds, CooledPart, Cooling, Engagement, Facing, FillerKind, Joint, Sink};
+
+/// Lengths nearer to each other than this are one, relative.
+const SAME_LENGTH: f64 = 1e-9;
 
 /// A stated value with its spread.
 #[derive(Clone, Debug, PartialEq)]
@@ -24,6 +27,29 @@ pub enum What {
     FillerThinnest(usize),
     /// Emissivity of the faces of a plate.
     Emissivity(usize),
+    /// Thickness of a plate.
+    Thickness(usize),
+    /// Height of the known bow of a plate, whichever way it goes.
+    Bow(usize),
+    /// Out-of-flatness of a face of a plate that is stated without its shape.
+    Flatness(usize, Facing),
+    /// Film coefficient of the sink, of several the one of this number.
+    Film(usize),
+    /// Absolute pressure of the gas.
+    GasPressure,
+}
+
+impl What {
+    /// Whether another value makes another body or another way out for the heat, which nothing but a
+    /// solution of its own can tell.
+    pub fn remakes(self) -> bool {
+        matches!(self, Self::Thickness(_) | Self::Bow(_) | Self::Film(_))
+    }
+
+    /// Whether the plates touch otherwise under another value.
+    pub fn moves_contact(self) -> bool {
+        matches!(self, Self::Thickness(_) | Self::Bow(_))
+    }
 }
 
 /// How much of the scatter of friction a bolt has for itself.
@@ -105,6 +131,123 @@ impl Joint {
             FillerKind::Table { .. } => {}
         }
         Some(kind)
+    }
+
+    /// Numbers of the stated spreads that make another joint of it: see [`What::remakes`].
+    pub fn remaking(&self) -> Vec<usize> {
+        let stated = self.uncertain.iter().enumerate();
+        stated
+            .filter(|(_, each)| each.what.remakes() && each.bounds.is_spread())
+            .map(|(index, _)| index)
+            .collect()
+    }
+
+    /// The joint whose file states these values, SI, in place of the spreads of these numbers.
+    ///
+    /// A thread that is engaged over the whole of its plate goes with it, and one that a thinner plate
+    /// does not hold ends with it.
+    ///
+    /// Checked: `a_remade_joint_is_the_one_of_its_file`.
+    #[must_use]
+    pub fn remade(&self, values: &[(usize, f64)]) -> Self {
+        let mut joint = self.clone();
+        for (index, value) in values {
+            joint.uncertain[*index].bounds = Bounds::exact(*value);
+            match self.uncertain[*index].what {
+                What::Thickness(plate) => joint.thicken(plate, *value),
+                What::Bow(plate) => {
+                    let bow = &mut joint.plates[plate].bow;
+                    *bow = bow.map(|stated| value.copysign(stated));
+                }
+                What::Film(number) => joint.cool(number, *value),
+                _ => {}
+            }
+        }
+        joint
+    }
+
+    fn thicken(&mut self, plate: usize, thickness: f64) {
+        let before = self.plates[plate].thickness;
+        self.plates[plate].thickness = thickness;
+        let last = self.plates.len() - 1;
+        for fastener in &mut self.fasteners {
+            if last - fastener.head_plate != plate {
+                continue;
+            }
+            if let Engagement::Tapped { length } | Engagement::Insert { length } =
+                &mut fastener.engagement
+            {
+                if (*length / before - 1.0).abs() < SAME_LENGTH {
+                    *length = thickness;
+                }
+                *length = length.min(thickness);
+            }
+        }
+    }
+
+    fn cool(&mut self, number: usize, film: f64) {
+        match &mut self.sink {
+            Cooling::Whole(Sink::Film(coefficient)) => *coefficient = film,
+            Cooling::Whole(_) => {}
+            Cooling::Parts(parts) => {
+                let films = parts.iter_mut().filter_map(|part| match part {
+                    CooledPart::Film { coefficient, .. } => Some(coefficient),
+                    _ => None,
+                });
+                if let Some(coefficient) = films.into_iter().nth(number) {
+                    *coefficient = film;
+                }
+            }
+        }
+    }
+
+    /// Out-of-flatness that is stated without its shape, all faces together, at the places of its
+    /// spreads over that at nominal, 1; 1 where none is stated.
+    pub fn flatness_factor(&self, places: &[f64]) -> f64 {
+        self.flatness_sum(&|bounds, index| bounds.at(places.get(index).copied().unwrap_or(0.0)))
+    }
+
+    /// The largest such factor.
+    pub fn most_flatness_factor(&self) -> f64 {
+        self.flatness_sum(&|bounds, _| bounds.high)
+    }
+
+    fn flatness_sum(&self, height: &dyn Fn(&Bounds, usize) -> f64) -> f64 {
+        let faces: f64 = (0..self.interfaces())
+            .map(|interface| self.loose_flatness(interface))
+            .sum();
+        let uncertain = self.uncertain.iter().enumerate();
+        let more: f64 = uncertain
+            .filter(|(_, each)| matches!(each.what, What::Flatness(..)))
+            .map(|(index, each)| height(&each.bounds, index) - each.bounds.nominal)
+            .sum();
+        if faces > 0.0 { 1.0 + more / faces } else { 1.0 }
+    }
+
+    /// Whether the out-of-flatness of a plate is stated with a spread.
+    pub fn spreads_flatness(&self, plate: usize) -> bool {
+        self.uncertain
+            .iter()
+            .any(|each| matches!(each.what, What::Flatness(of, _) if of == plate))
+    }
+
+    /// Pressure of the gas at the place of its spread over that at nominal, 1.
+    pub fn gas_pressure_factor(&self, places: &[f64]) -> f64 {
+        let nominal = |each: &Uncertain| each.bounds.nominal;
+        let stated = self
+            .uncertain
+            .iter()
+            .find(|each| each.what == What::GasPressure);
+        let there = self.stated(What::GasPressure, places);
+        stated
+            .zip(there)
+            .map_or(1.0, |(each, there)| there / nominal(each))
+    }
+
+    /// A value that is stated with a spread of its own; none where it has none.
+    pub fn spread_of(&self, what: What) -> Option<Bounds> {
+        let stated = self.uncertain.iter().find(|each| each.what == what)?;
+        stated.bounds.is_spread().then_some(stated.bounds)
     }
 
     /// Emissivity of a face of an interface, with the stated spread of its plate at its place.

@@ -60,7 +60,7 @@ pub static COOLED: Section = Section {
     fields: &[
         field(
             "film",
-            Kind::Quantity(Quantity::FilmCoefficient),
+            Kind::Spread(Measure::Quantity(Quantity::FilmCoefficient)),
             "heat transfer coefficient on the whole back or on a zone of it, such as the strip of a channel",
             "\"500 W/(m²·K)\"",
         )

@@ -12,6 +12,12 @@ const fn length(key: &'static str, meaning: &'static str, example: &'static str)
     field(key, Kind::Quantity(Quantity::Length), meaning, example).within(1e-5, 100.0)
 }
 
+/// A length that may carry its spread.
+const fn spread(key: &'static str, meaning: &'static str, example: &'static str) -> Field {
+    let kind = Kind::Spread(Measure::Quantity(Quantity::Length));
+    field(key, kind, meaning, example)
+}
+
 /// `[[plate]]`.
 pub static PLATE: Section = Section {
     name: "plate",
@@ -45,7 +51,7 @@ pub static PLATE: Section = Section {
             "\"300 MPa\"",
         )
         .within(1e5, 1e11),
-        length("thickness", "thickness", "\"5 mm\"")
+        spread("thickness", "thickness, or its range", "\"5 mm\"")
             .within(1e-6, 10.0)
             .required(),
         field(
@@ -319,9 +325,9 @@ pub static FINISH: Section = Section {
         )
         .within(1e-3, 2.0)
         .default("from the roughness: 0.125 (Rq / 1 µm)^0.402"),
-        length(
+        spread(
             "flatness",
-            "total out-of-flatness of the face",
+            "total out-of-flatness of the face, or its range",
             "\"0.1 mm\"",
         )
         .within(0.0, 0.1)
@@ -368,7 +374,7 @@ pub static BOW: Section = Section {
             "\"concave\"",
         )
         .required(),
-        length("height", "height of the bow", "\"30 µm\"")
+        spread("height", "height of the bow, or its range", "\"30 µm\"")
             .within(0.0, 0.1)
             .required(),
     ],

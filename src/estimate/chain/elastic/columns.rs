@@ -173,6 +173,11 @@ impl Solver for Columns {
         self.bank.tabulate(joint, level, range)
     }
 
+    fn remade(&self, joint: &Joint, same_contact: bool) -> Result<Arc<dyn Solver>, Failure> {
+        let bank = self.bank.remade(joint, same_contact)?;
+        Ok(Arc::new(Self { bank }))
+    }
+
     fn forms(&self, joint: &Joint) -> &'static [Variant] {
         let layered = (0..joint.interfaces()).all(|interface| joint.is_layered(interface));
         if layered { &FORMS[..2] } else { &FORMS }

@@ -11,14 +11,12 @@ use crate::{
             elastic::{
                 ElasticModel,
                 flat::Flat,
-                level::GROUND,
                 response::{self, Readings},
-                solver::Factors,
                 spread::Spread,
-                variant::Variant,
             },
         },
     },
+    joint::Joint,
     resistance::Path,
 };
 
@@ -30,6 +28,8 @@ pub(in crate::estimate::chain) struct ElasticPlan<'a> {
     /// The path that is moved, and the readings of the surfaces there.
     from: Drawn,
     read: Readings,
+    /// The joint, where its out-of-flatness is stated with a spread.
+    heights: Option<&'a Joint>,
 }
 
 impl ElasticModel {
@@ -45,7 +45,7 @@ impl ElasticModel {
         let (from, read) = match &case.solved {
             Some(solved) => {
                 let departure = spread.gauge.departure(&case.conditions);
-                let shift = spread.shift(&case.conditions.forces);
+                let shift = spread.shift((&case.conditions.forces, departure[0]), &[]);
                 let here = flat.at(&departure);
                 let read = std::array::from_fn(|reading| here[reading] + shift[reading]);
                 (Drawn::of(solved.path()), read)
@@ -61,6 +61,7 @@ impl ElasticModel {
             flat,
             from,
             read,
+            heights: Some(chain.joint()).filter(|joint| joint.most_flatness_factor() > 1.0),
         };
         Ok((Outlook::of(chain, index, &case.warmth)?, plan))
     }
@@ -81,13 +82,12 @@ impl ElasticModel {
         if to[0] < response::LEAST_FORCE.ln() {
             return Ok(None);
         }
-        let task = (GROUND, Variant::Stated);
-        let solved = self.solved(chain, task, (&conditions, &Factors::NONE))?;
+        let solved = self.drawn_for_itself(chain, (index, &conditions), at)?;
         let base = &spread.response.base;
-        let shift = spread.shift(&conditions.forces);
+        let shift = spread.shift((&conditions.forces, to[0]), &at.stated);
         let moved = (&response::NOMINAL, &to);
         let told = spread.response.shifted(base, moved, &shift).source_to_sink;
-        Ok(Some([told, solved.path().source_to_sink]))
+        Ok(Some([told, solved.source_to_sink]))
     }
 }
 
@@ -101,42 +101,31 @@ impl ElasticPlan<'_> {
     ) -> Drawn {
         let to = self.spread.gauge.departure(conditions);
         let open = self.spread.response.open.as_ref();
+        let shift = self.spread.shift((&conditions.forces, to[0]), &at.stated);
         let moved = if let Some(open) = open.filter(|_| to[0] == f64::NEG_INFINITY) {
-            Drawn::of(open)
+            Drawn::of(open).moved(&shift)
         } else {
-            let shift = self.spread.shift(&conditions.forces);
             let there = self.flat.at(&to);
             self.moved(std::array::from_fn(|reading| {
                 there[reading] + shift[reading]
             }))
         };
         moved
-            .with_form(self.spread.form(to[0], [at.field, at.flatness]))
+            .with_form(self.spread.form(to[0], [at.field, self.flatness(at)]))
             .with_error(at.numerical)
     }
 
     /// The path moved to other readings: that of `Response::applied`.
     fn moved(&self, there: Readings) -> Drawn {
-        let [contact, perfect, added, node, interface, hottest, joint]: Readings =
-            std::array::from_fn(|reading| there[reading] - self.read[reading]);
-        let from = &self.from;
-        let perfect_contact = from.perfect_contact * perfect.exp();
-        let added_by_joint = if added.is_finite() {
-            from.added_by_joint * added.exp()
-        } else {
-            let share = from.added_by_joint / from.source_to_sink + joint;
-            perfect_contact * share / (1.0 - share)
-        };
-        let source_to_sink = perfect_contact + added_by_joint;
-        let share = |value: f64, moved: f64| (value / from.source_to_sink + moved) * source_to_sink;
-        Drawn {
-            contact: from.contact * (-contact).exp(),
-            perfect_contact,
-            added_by_joint,
-            source_to_sink,
-            node_to_node: share(from.node_to_node, node),
-            interface_drop: share(from.interface_drop, interface),
-            hottest: share(from.hottest, hottest),
+        let by: Readings = std::array::from_fn(|reading| there[reading] - self.read[reading]);
+        self.from.moved(&by)
+    }
+
+    /// Place of the out-of-flatness of a draw, 1 for the nominal height.
+    fn flatness(&self, at: &Realisation) -> f64 {
+        match self.heights {
+            Some(joint) => at.flatness * joint.flatness_factor(&at.stated),
+            None => at.flatness,
         }
     }
 }
@@ -155,6 +144,29 @@ impl ElasticPlan<'_> {
 }
 
 impl Drawn {
+    /// With its readings moved by so much: what `moved` makes of a path.
+    pub(in crate::estimate::chain) fn moved(&self, by: &Readings) -> Self {
+        let [contact, perfect, added, node, interface, hottest, joint] = *by;
+        let perfect_contact = self.perfect_contact * perfect.exp();
+        let added_by_joint = if added.is_finite() {
+            self.added_by_joint * added.exp()
+        } else {
+            let share = self.added_by_joint / self.source_to_sink + joint;
+            perfect_contact * share / (1.0 - share)
+        };
+        let source_to_sink = perfect_contact + added_by_joint;
+        let share = |value: f64, moved: f64| (value / self.source_to_sink + moved) * source_to_sink;
+        Self {
+            contact: self.contact * (-contact).exp(),
+            perfect_contact,
+            added_by_joint,
+            source_to_sink,
+            node_to_node: share(self.node_to_node, node),
+            interface_drop: share(self.interface_drop, interface),
+            hottest: share(self.hottest, hottest),
+        }
+    }
+
     /// What a path leaves behind.
     pub(in crate::estimate::chain) fn of(path: &Path) -> Self {
         Self {

@@ -26,7 +26,7 @@ const FORCE_STEP: f64 = 0.6;
 const LEAST_REACH: f64 = 0.1;
 /// Least force that is solved, over the nominal: below it the answer is that of this force as long
 /// as any is left.
-pub(super) const LEAST_FORCE: f64 = 0.02;
+pub(in crate::estimate::chain) const LEAST_FORCE: f64 = 0.02;
 /// Places at which the surfaces are held against direct solutions: force between the ends of its
 /// range, the others in half widths of the design.
 const PROBES: [[f64; VARIABLES]; 4] = [
@@ -187,7 +187,7 @@ fn weighted(values: &(impl Iterator<Item = (f64, f64)> + Clone)) -> f64 {
 ///
 /// What the joint adds is read as a logarithm where it is above zero in every solution, and as a
 /// share of source to sink where it is nothing within rounding.
-pub(super) type Readings = [f64; 7];
+pub(in crate::estimate::chain) type Readings = [f64; 7];
 
 /// The answers of one case over a range of force.
 ///
@@ -327,31 +327,12 @@ impl Response {
         if let (f64::NEG_INFINITY, Some(open)) = (to[0], &self.open) {
             return Path {
                 coolant_drop: path.coolant_drop,
-                ..open.clone()
+                ..moved(open, shift)
             };
         }
         let (there, here) = (self.at(to), self.at(from));
-        let [contact, perfect, added, node, interface, hottest, joint]: Readings =
-            std::array::from_fn(|reading| there[reading] - here[reading] + shift[reading]);
-        let perfect_contact = path.perfect_contact * perfect.exp();
-        let added_by_joint = if added.is_finite() {
-            path.added_by_joint * added.exp()
-        } else {
-            let share = path.added_by_joint / path.source_to_sink + joint;
-            perfect_contact * share / (1.0 - share)
-        };
-        let source_to_sink = perfect_contact + added_by_joint;
-        let share = |value: f64, moved: f64| (value / path.source_to_sink + moved) * source_to_sink;
-        Path {
-            contact: path.contact * contact.exp(),
-            perfect_contact,
-            added_by_joint,
-            source_to_sink,
-            node_to_node: share(path.node_to_node, node),
-            interface_drop: share(path.interface_drop, interface),
-            hottest: share(path.hottest, hottest),
-            ..path.clone()
-        }
+        let by = std::array::from_fn(|reading| there[reading] - here[reading] + shift[reading]);
+        moved(path, &by)
     }
 
     /// Readings at a departure.
@@ -381,6 +362,30 @@ impl Response {
             }
         }
         read
+    }
+}
+
+/// A path with its readings moved by so much.
+pub(in crate::estimate::chain) fn moved(path: &Path, by: &Readings) -> Path {
+    let [contact, perfect, added, node, interface, hottest, joint] = *by;
+    let perfect_contact = path.perfect_contact * perfect.exp();
+    let added_by_joint = if added.is_finite() {
+        path.added_by_joint * added.exp()
+    } else {
+        let share = path.added_by_joint / path.source_to_sink + joint;
+        perfect_contact * share / (1.0 - share)
+    };
+    let source_to_sink = perfect_contact + added_by_joint;
+    let share = |value: f64, moved: f64| (value / path.source_to_sink + moved) * source_to_sink;
+    Path {
+        contact: path.contact * contact.exp(),
+        perfect_contact,
+        added_by_joint,
+        source_to_sink,
+        node_to_node: share(path.node_to_node, node),
+        interface_drop: share(path.interface_drop, interface),
+        hottest: share(path.hottest, hottest),
+        ..path.clone()
     }
 }
 
@@ -482,7 +487,7 @@ fn surfaces((forces, steps): (&[f64], &[f64]), read: &[Readings]) -> Vec<[Surfac
         .collect()
 }
 
-pub(super) fn readings(path: &Path) -> Readings {
+pub(in crate::estimate::chain) fn readings(path: &Path) -> Readings {
     let whole = path.source_to_sink;
     [
         path.contact.ln(),

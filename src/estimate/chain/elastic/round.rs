@@ -8,10 +8,11 @@ use std::sync::{Arc, Mutex, PoisonError};
 
 use crate::{
     estimate::{
-        Failure, Flatness, RingRow,
+        Failure, Flatness, RingRow, Watch,
         chain::{
             conditions::Conditions,
             elastic::{
+                columns::Columns,
                 level::Level,
                 solver::{Factors, Solved, Solver},
                 variant::Variant,
@@ -113,6 +114,19 @@ impl Solver for Round {
         Ok(())
     }
 
+    /// Contacts and plates are kept under their problems: all that is known goes along.
+    fn remade(&self, joint: &Joint, _: bool) -> Result<Arc<dyn Solver>, Failure> {
+        let Some(shape) = Shape::of(joint) else {
+            let columns = Columns::new(joint, u64::MAX, &Watch::none())?;
+            return Ok(Arc::new(columns));
+        };
+        Ok(Arc::new(Self {
+            shape,
+            contacts: Mutex::new(known(&self.contacts)),
+            plates: Mutex::new(known(&self.plates)),
+        }))
+    }
+
     fn forms(&self, _: &Joint) -> &'static [Variant] {
         &FORMS
     }
@@ -121,6 +135,12 @@ impl Solver for Round {
     fn flatness(&self, _: &Joint, _: Level, _: &Conditions) -> Result<Flatness, Failure> {
         Ok(Flatness::Flat)
     }
+}
+
+/// All that is kept so far.
+fn known<T: Clone>(kept: &Mutex<Vec<T>>) -> Vec<T> {
+    let held = kept.lock().unwrap_or_else(PoisonError::into_inner);
+    held.clone()
 }
 
 /// What is kept under a key, or made and kept.

@@ -16,6 +16,7 @@ use crate::{
                 variant::Variant,
             },
             form::with_form,
+            remade::Remade,
         },
     },
     resistance::Path,
@@ -28,6 +29,10 @@ pub(super) struct Spread {
     pub(super) response: Response,
     pattern: Pattern,
     bounds: Vec<Bounds>,
+    /// Largest height of the out-of-flatness over the nominal one, 1.
+    highest: f64,
+    /// What stated values do that make another joint; none where there are none.
+    remade: Option<Remade>,
 }
 
 /// Bounds at one force, as factors on what the joint adds.
@@ -39,12 +44,22 @@ struct Bounds {
     form: [f64; 2],
     /// Convex and concave; 1 where no flatness is loose.
     bent: [f64; 2],
+    /// The same at the largest height that its spread allows.
+    most_bent: [f64; 2],
 }
 
 impl Spread {
-    /// What the forces of bolts, N, add to the readings beyond their sum.
-    pub(super) fn shift(&self, forces: &[f64]) -> Readings {
-        self.pattern.shift(forces)
+    /// What the forces of bolts, N, add to the readings beyond their sum, and what the stated spreads at
+    /// their places do that make another joint; with the force over the nominal one, as a logarithm.
+    pub(super) fn shift(&self, (forces, force): (&[f64], f64), places: &[f64]) -> Readings {
+        let mut shift = self.pattern.shift(forces);
+        if let Some(remade) = &self.remade {
+            let more = remade.shift(force, places);
+            for (sum, each) in shift.iter_mut().zip(more) {
+                *sum += each;
+            }
+        }
+        shift
     }
 
     /// A path moved from one departure to another, at a place of the model form and of flatness.
@@ -61,14 +76,21 @@ impl Spread {
     /// Factor on what the joint adds at a force, by the places of the model form and of flatness.
     pub(super) fn form(&self, force: f64, [form, flatness]: [f64; 2]) -> f64 {
         let bounds = self.bounds_at(force);
-        between(bounds.form, form) * between(bounds.bent, flatness)
+        between(bounds.form, form) * bounds.bent_by(flatness, self.highest)
     }
 
     /// The bounds as data.
     pub(super) fn bounds_tables(&self) -> Vec<Value> {
         let bounds = self.bounds.iter();
         bounds
-            .map(|each| json!({ "force": each.force, "form": each.form, "bent": each.bent }))
+            .map(|each| {
+                json!({
+                    "force": each.force,
+                    "form": each.form,
+                    "bent": each.bent,
+                    "most_bent": each.most_bent,
+                })
+            })
             .collect()
     }
 
@@ -89,7 +111,21 @@ impl Spread {
             force,
             form: mix(low.form, high.form),
             bent: mix(low.bent, high.bent),
+            most_bent: mix(low.most_bent, high.most_bent),
         }
+    }
+}
+
+impl Bounds {
+    /// Factor at a place of flatness, ±1 at the nominal height and so much at the largest: straight
+    /// between none, nominal and largest.
+    fn bent_by(&self, place: f64, highest: f64) -> f64 {
+        if place.abs() <= 1.0 {
+            return between(self.bent, place);
+        }
+        let end = usize::from(place > 0.0);
+        let beyond = (place.abs() - 1.0) / (highest - 1.0);
+        self.bent[end] + beyond * (self.most_bent[end] - self.bent[end])
     }
 }
 
@@ -160,11 +196,20 @@ impl ElasticModel {
         } else {
             self.bounds(chain, nominal, range)?
         };
+        let remade = match known {
+            Some(known) => known.remade.clone(),
+            None => self.remade_answers(chain, (case, nominal), (range, &response))?,
+        };
+        if let Some(remade) = &remade {
+            response.error = worse(response.error, remade.error);
+        }
         Ok(Spread {
             gauge,
             response,
             pattern,
             bounds,
+            highest: joint.most_flatness_factor(),
+            remade,
         })
     }
 
@@ -180,8 +225,12 @@ impl ElasticModel {
         let mut variants = vec![Variant::Stated];
         variants.extend(forms);
         let loose = joint.most_loose_flatness() > 0.0;
+        let highest = joint.most_flatness_factor();
         if loose {
             variants.extend([Variant::Bent(-1.0), Variant::Bent(1.0)]);
+        }
+        if highest > 1.0 {
+            variants.extend([Variant::Bent(-highest), Variant::Bent(highest)]);
         }
         let mut forces = response::bounded(range, loose);
         forces.sort_by(|one, other| one.abs().total_cmp(&other.abs()));
@@ -203,13 +252,16 @@ impl ElasticModel {
             let form = forms.iter().fold([1.0_f64; 2], |[low, high], ratio| {
                 [low.min(*ratio), high.max(*ratio)]
             });
+            let (bent, most_bent) = match bent {
+                [convex, concave] => ([*convex, *concave], [*convex, *concave]),
+                [convex, concave, most @ ..] => ([*convex, *concave], [most[0], most[1]]),
+                _ => ([1.0; 2], [1.0; 2]),
+            };
             Bounds {
                 force: *force,
                 form,
-                bent: match bent {
-                    [convex, concave] => [*convex, *concave],
-                    _ => [1.0; 2],
-                },
+                bent,
+                most_bent,
             }
         };
         let parts = paths.chunks(variants.len());
@@ -277,7 +329,7 @@ impl ElasticModel {
 }
 
 /// The state on the ground level away from nominal.
-fn departed(nominal: &Conditions, (departure, depth): &(Departure, Depth)) -> State {
+pub(super) fn departed(nominal: &Conditions, (departure, depth): &(Departure, Depth)) -> State {
     let [force, touching, parted, warm, cold, between] = *departure;
     State {
         variant: Variant::Stated,
@@ -292,7 +344,7 @@ fn departed(nominal: &Conditions, (departure, depth): &(Departure, Depth)) -> St
 }
 
 /// Nominal conditions under all forces times a factor, given as its logarithm.
-fn under(nominal: &Conditions, force: f64) -> Conditions {
+pub(super) fn under(nominal: &Conditions, force: f64) -> Conditions {
     Conditions {
         forces: nominal
             .forces
@@ -304,7 +356,7 @@ fn under(nominal: &Conditions, force: f64) -> Conditions {
 }
 
 /// The larger of two errors; not a number where one of them is none.
-fn worse(one: f64, other: f64) -> f64 {
+pub(super) fn worse(one: f64, other: f64) -> f64 {
     if one.is_nan() || other.is_nan() {
         f64::NAN
     } else {

@@ -83,6 +83,16 @@ impl Bank {
         })
     }
 
+    /// A bank of a joint that differs in thickness, bow or film, with the fields of this one where the
+    /// contact is the same.
+    pub(super) fn remade(&self, joint: &Joint, same_contact: bool) -> Result<Self, Failure> {
+        let bank = Self::new(joint, self.most_bytes, &self.watch)?;
+        if same_contact {
+            bank.solved().clone_from(&self.solved());
+        }
+        Ok(bank)
+    }
+
     fn solved(&self) -> MutexGuard<'_, Vec<Solved>> {
         self.solved.lock().unwrap_or_else(PoisonError::into_inner)
     }
