@@ -327,6 +327,7 @@ fn case_result(chain: &Chain, case: usize, numerical_error: f64) -> Result<CaseR
             hottest: Band::nominal(heat * path.hottest),
             interface_drop: Band::nominal(heat * path.interface_drop),
             coolant_drop: path.coolant_drop.map(|drop| heat * drop),
+            coolant_drop_ends: None,
         }),
         temperatures: chain.temperatures(case)?,
         requirement: None,

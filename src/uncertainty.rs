@@ -37,7 +37,7 @@ use crate::{
         self, Band, CaseResult, Chain, Checkpoint, Driver, Estimate, Failure, LARGE_ERROR, Met,
         Options, PlaneResult, RequirementResult, Results, Rise, Sampling,
     },
-    joint::{Joint, Limit, Plane, Requirement, RequirementKind},
+    joint::{Cooling, Joint, Limit, Plane, Requirement, RequirementKind, What},
 };
 
 /// Quantiles that bound every band.
@@ -86,10 +86,29 @@ fn apply(draws: &Draws, joint: &Joint, case: &mut CaseResult) {
             hottest: scaled(rise.hottest.nominal, Answer::Hottest),
             interface_drop: scaled(rise.interface_drop.nominal, Answer::InterfaceDrop),
             coolant_drop: rise.coolant_drop,
+            coolant_drop_ends: rise.coolant_drop.and_then(|drop| coolant_ends(joint, drop)),
         };
     }
     case.sampling = sampling(draws);
     case.drivers = drivers(draws);
+}
+
+/// Drop to the coolant at the quantiles of the film, K; none where the film has no spread, and where heat
+/// leaves by more ways than one.
+///
+/// ```text
+/// ΔT = Q/(h A)
+/// ```
+///
+/// `h` is the film, `A` its area, `Q` the heat of the joint, all of which crosses it: exact, no draw is asked.
+fn coolant_ends(joint: &Joint, nominal: f64) -> Option<[f64; 2]> {
+    let alone = match &joint.sink {
+        Cooling::Whole(_) => true,
+        Cooling::Parts(parts) => parts.len() == 1,
+    };
+    let film = joint.spread_of(What::Film(0)).filter(|_| alone)?;
+    let [low, high] = QUANTILES.map(|quantile| film.at(2.0 * quantile - 1.0));
+    Some([high, low].map(|film_there| nominal * film.nominal / film_there))
 }
 
 /// How well the draws know the ends of the bands.

@@ -1,5 +1,7 @@
 //! `ringsum fit`: laws that joint files take as they stand, unknowns that are found or seen not to be.
 
+#[path = "fit/cautions.rs"]
+mod cautions;
 #[path = "fit/command.rs"]
 mod command;
 #[path = "fit/recovery.rs"]
@@ -23,7 +25,17 @@ fn readings(text: &str) -> Readings {
 }
 
 /// A joint on the closed-form cone, its unknown fitted to readings.
-fn answer(file: &str, sets: &[&str], (asked, ends): (&str, [&str; 2]), points: &str) -> Answer {
+fn answer(file: &str, sets: &[&str], asked: (&str, [&str; 2]), points: &str) -> Answer {
+    answer_with(file, sets, asked, (128, points))
+}
+
+/// The same with so many draws of the other inputs.
+fn answer_with(
+    file: &str,
+    sets: &[&str],
+    (asked, ends): (&str, [&str; 2]),
+    (draws, points): (u32, &str),
+) -> Answer {
     let text = fs::read_to_string(file).expect("the joint is there");
     let reader = |more: &[String]| {
         let sets: Vec<String> = sets
@@ -46,7 +58,7 @@ fn answer(file: &str, sets: &[&str], (asked, ends): (&str, [&str; 2]), points: &
         unknown,
         range,
         plane: Plane::SourceToSink,
-        draws: 128,
+        draws,
         seed: 1,
     };
     unknown::fit(&bench, &question, &readings(points)).unwrap_or_else(|found| panic!("{found}"))

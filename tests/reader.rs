@@ -611,7 +611,7 @@ fn bad_overrides_are_told() {
         "plate.lid.thickness=6 mm",
         "fastener[3].preload=2 kN",
         "service[1].heat=2 W",
-        "plate.box.thickness.low=1 mm",
+        "plate.box.hole.low=1 mm",
         "plate=1",
         "no equals",
         "=3",

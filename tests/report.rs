@@ -100,6 +100,7 @@ fn case(name: &'static str, sink_temperature: f64) -> CaseResult {
             hottest: Band::nominal(6.1),
             interface_drop: Band::nominal(2.9),
             coolant_drop: Some(0.75),
+            coolant_drop_ends: Some([0.6, 1.0]),
         }),
         temperatures: None,
         requirement: Some(RequirementResult {

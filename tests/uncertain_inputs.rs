@@ -2,7 +2,7 @@
 
 use ringsum::{
     estimate::{Chain, Options, Realisation},
-    joint::{self, Bounds, Friction, Joint, Tightening, What},
+    joint::{self, Bounds, Cooling, Friction, Joint, Sink, Tightening, What},
     numerics::distribution::Shape,
     uncertainty::{self, Moves},
 };
@@ -269,4 +269,230 @@ fn independent_bolts_average_out() {
     // (x⁴ − 4 (x − 1)⁴)/24 = 0.05 (Irwin–Hall): x = 1.0466. The band is 1 − 2 x/4 = 0.4767 of the
     // whole width against 0.9; 1 % is the noise of 4096 draws.
     near(own / lot, 0.476_7 / 0.9, 0.01);
+}
+
+/// Everything that a file states with a spread is an input with a remedy, in the drivers, the worst case
+/// and the band.
+#[test]
+fn stated_spreads_of_plates_sink_and_gas_are_inputs() {
+    let plates = PLATES
+        .replace(
+            "\"vacuum\"",
+            "\"helium\"\npressure = \"2 kPa ± 50 %\"\nheat = \"20 W\"",
+        )
+        .replacen("thickness = \"5 mm\"", "thickness = \"5 mm ± 0.5 mm\"", 1)
+        + "cooled = { film = \"500 W/(m²·K) ± 30 %\" }\n";
+    let joint = read(&[&plates, BOLTS, NO_LOSS]);
+    let chain = Chain::new(&joint).expect("a chain");
+    let options = uncertainty::RankingOptions {
+        target: uncertainty::Target::SourceToSink,
+        draws: Options {
+            draws: 256,
+            seed: 1,
+        },
+    };
+    let ranking = uncertainty::ranking(&chain, &options).expect("a ranking");
+    for (name, says) in [
+        ("thickness of the warm plate", "now 4.5 to 5.5 mm"),
+        ("film of the sink", "now 350 to 650 W/(m²·K)"),
+        ("pressure of the gas", "now 1 to 3 kPa"),
+    ] {
+        let found = ranking.inputs.iter().find(|input| input.input == name);
+        let found = found.unwrap_or_else(|| panic!("{name} is missing"));
+        assert!(found.remedy.contains(says), "{}", found.remedy);
+        assert!(
+            found.alone[0] != found.alone[1],
+            "{name} moves nothing: {found:?}"
+        );
+    }
+    let found = uncertainty::along(&chain, &options.draws).expect("a number");
+    let case = &found.cases[0];
+    // Told where all of them are moved at once, nearly to their ends: pressure and faces act on each other.
+    assert!(
+        case.draw_error.is_some_and(|error| error < 0.03),
+        "{:?}",
+        case.draw_error
+    );
+    let names: Vec<&str> = case.drivers.iter().map(|driver| driver.input).collect();
+    assert!(names.contains(&"film of the sink"), "{names:?}");
+    // A thin plate spreads worse: the worst case with the spread is beyond that without.
+    let without = plates
+        .replace(" ± 0.5 mm", "")
+        .replace(" ± 30 %", "")
+        .replace(" ± 50 %", "");
+    let joint = read(&[&without, BOLTS, NO_LOSS]);
+    let known = uncertainty::estimate(&joint, &options.draws).expect("a number");
+    let worst = |case: &ringsum::estimate::CaseResult| case.worst.expect("ends").source_to_sink;
+    let (wide, narrow) = (worst(case), worst(&known.cases[0]));
+    assert!(
+        wide[0] < narrow[0] && wide[1] > narrow[1],
+        "{wide:?} {narrow:?}"
+    );
+}
+
+/// The drop from the sink surface to the coolant is Q/(h A): of 20 W over 64 cm², less four holes of
+/// 5.5 mm, of 500 W/(m²·K) ± 30 %; 5 % and 95 % of an even spread lie at ± 27 %.
+#[test]
+fn film_moves_the_drop_to_the_coolant_as_its_reciprocal() {
+    let plates = PLATES.replace("\"vacuum\"", "\"vacuum\"\nheat = \"20 W\"")
+        + "cooled = { film = \"500 W/(m²·K) ± 30 %\" }\n";
+    let joint = read(&[&plates, BOLTS]);
+    let options = Options { draws: 64, seed: 1 };
+    let found = uncertainty::estimate(&joint, &options).expect("a number");
+    let rise = found.cases[0].rise.expect("a heat");
+    let area = 64e-4 - std::f64::consts::PI * 5.5e-3_f64.powi(2);
+    near(
+        rise.coolant_drop.expect("a film"),
+        20.0 / (500.0 * area),
+        1e-9,
+    );
+    let [low, high] = rise.coolant_drop_ends.expect("a spread");
+    near(low, 20.0 / (635.0 * area), 1e-9);
+    near(high, 20.0 / (365.0 * area), 1e-9);
+}
+
+/// What the cone cannot move is refused there and not left out.
+#[test]
+fn spreads_of_flatness_ask_for_a_solved_field() {
+    for (from, to, field) in [
+        (
+            "slope = 0.11 }",
+            "slope = 0.11, flatness = \"10 µm to 30 µm\" }",
+            "finish.flatness",
+        ),
+        (
+            "finish = {",
+            "bow = { kind = \"convex\", height = \"20 µm ± 5 µm\" }\nfinish = {",
+            "bow.height",
+        ),
+    ] {
+        let joint = read(&[&PLATES.replacen(from, to, 1), BOLTS]);
+        let refused = Chain::new(&joint).expect_err("the cone takes no such spread");
+        let told = refused.to_string();
+        assert!(told.contains(field) && told.contains("spread"), "{told}");
+    }
+}
+
+/// Faults that a spread can have and a single value cannot, each at its place.
+#[test]
+fn ends_of_a_spread_are_held_as_a_value_is() {
+    let codes = |plates: &str, bolts: &str| -> Vec<&'static str> {
+        let refused = joint::read(&[plates, bolts].concat()).expect_err("a fault");
+        refused.iter().map(|fault| fault.code).collect()
+    };
+    let thick =
+        |value: &str| PLATES.replace("thickness = \"5 mm\"", &format!("thickness = {value}"));
+    // Thicker than is taken at one end only, in both plates.
+    assert_eq!(
+        codes(&thick("\"0.4 m to 0.6 m\""), BOLTS),
+        ["geometry/size-limit"; 2]
+    );
+    // A thread of 5 mm in a plate that may be 4.8 mm thick.
+    let tapped = BOLTS.replace(
+        "preload",
+        "engagement = { kind = \"tapped\", length = \"5 mm\" }\npreload",
+    );
+    assert_eq!(codes(&thick("\"5 mm ± 0.2 mm\""), &tapped), ["value/range"]);
+    let cooled = "cooled = [{ film = \"5 W/(m²·K) ± 1 W/(m²·K)\" }, { radiation = 0.8 }]\n";
+    let heated = PLATES.replace("\"vacuum\"", "\"vacuum\"\nheat = \"2 W\"");
+    assert_eq!(codes(&[&heated, cooled].concat(), BOLTS), ["file/conflict"]);
+}
+
+/// Who states a value with its spread has the joint of the file that states the value.
+#[test]
+fn a_remade_joint_is_the_one_of_its_file() {
+    let plates = PLATES
+        .replacen("thickness = \"5 mm\"", "thickness = \"5 mm ± 1 mm\"", 1)
+        .replace(
+            "finish = {",
+            "bow = { kind = \"convex\", height = \"20 µm ± 5 µm\" }\nfinish = {",
+        )
+        + "cooled = { film = \"500 W/(m²·K) ± 30 %\" }\n";
+    let tapped = BOLTS.replace(
+        "preload",
+        "from = \"lower\"\nengagement = { kind = \"tapped\" }\npreload",
+    );
+    let joint = read(&[&plates, &tapped]);
+    let numbers = joint.remaking();
+    assert_eq!(numbers.len(), 4, "{:?}", joint.uncertain);
+    let stated = plates
+        .replace("5 mm ± 1 mm", "4.2 mm")
+        .replacen("20 µm ± 5 µm", "17 µm", 1)
+        .replacen("20 µm ± 5 µm", "21 µm", 1)
+        .replace("500 W/(m²·K) ± 30 %", "420 W/(m²·K)");
+    let exact = read(&[&stated, &tapped]);
+    let bow = |plate: usize| exact.plates[plate].bow.expect("a bow").abs();
+    let film = match exact.sink {
+        Cooling::Whole(Sink::Film(film)) => film,
+        _ => panic!("a film on the whole back is stated"),
+    };
+    let values = [exact.plates[0].thickness, bow(0), bow(1), film];
+    let values: Vec<(usize, f64)> = numbers.into_iter().zip(values).collect();
+    let remade = joint.remade(&values);
+    assert_eq!(remade.fasteners, exact.fasteners);
+    assert_eq!(remade.sink, exact.sink);
+    assert_eq!(remade.plates, exact.plates);
+}
+
+/// In gas the worst case stands where every combination of ends says it stands.
+///
+/// Each of the inputs at its ends or at nominal, the force at its corners. On the cone more force is always
+/// less resistance, so that no force between the corners is worse.
+#[test]
+fn the_worst_case_in_gas_is_the_worst_of_every_combination() {
+    let plates = PLATES.replace("\"vacuum\"", "\"helium\"");
+    let joint = read(&[&plates, BOLTS, NO_LOSS]);
+    let chain = Chain::new(&joint).expect("a chain");
+    let options = Options { draws: 64, seed: 1 };
+    let found = uncertainty::along(&chain, &options).expect("a number");
+    let case = &found.cases[0];
+    let worst = case.worst.expect("every end has a number");
+    let inputs: Vec<_> = uncertainty::inputs(&chain)
+        .into_iter()
+        .filter(|input| input.name != uncertainty::NUMERICAL)
+        .collect();
+    let plan = chain.draw_plan(0).expect("a plan");
+    let mut workspace = plan.workspace();
+    let mut ends = [[f64::INFINITY, f64::NEG_INFINITY]; 4];
+    let states = 3_usize.pow(u32::try_from(inputs.len()).expect("few"));
+    for state in 0..states {
+        let mut at = Realisation::default();
+        let mut rest = state;
+        for input in &inputs {
+            match rest % 3 {
+                0 => (input.place)(&mut at, input.ends[0]),
+                1 => (input.place)(&mut at, input.ends[1]),
+                _ => {}
+            }
+            rest /= 3;
+        }
+        let drawn = plan.drawn(&at, &mut workspace).expect("a number");
+        let answers = [
+            drawn.contact,
+            drawn.node_to_node,
+            drawn.added_by_joint,
+            drawn.source_to_sink,
+        ];
+        for ([low, high], answer) in ends.iter_mut().zip(answers) {
+            *low = low.min(answer);
+            *high = high.max(answer);
+        }
+    }
+    assert!(states >= 3_usize.pow(7), "{states}");
+    let told = [
+        worst.contact,
+        worst.node_to_node,
+        worst.added_by_joint,
+        worst.source_to_sink,
+    ];
+    // The search holds the numerical error as well, which moves all but the ring sum by its own part.
+    for (which, (told, ends)) in told.into_iter().zip(ends).enumerate() {
+        let error = if which == 0 {
+            0.0
+        } else {
+            case.numerical_error
+        };
+        near(told[0], ends[0] * (1.0 - error), 1e-9);
+        near(told[1], ends[1] * (1.0 + error), 1e-9);
+    }
 }

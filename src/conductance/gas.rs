@@ -46,15 +46,6 @@ impl Rarefied {
         }
     }
 
-    /// The same at another pressure, given over that of before: the jump goes with the free path.
-    #[must_use]
-    pub fn at_pressure(self, factor: f64) -> Self {
-        Self {
-            jump: self.jump / factor,
-            ..self
-        }
-    }
-
     /// The gas with the catalogue's accommodation times `factor` at both walls; it ends at 1.
     #[inline]
     pub fn with(&self, factor: f64) -> GapGas {

@@ -75,7 +75,8 @@ fn preload_cautions(chain: &Chain) -> Vec<Caution> {
             supports: &prepared.supports,
         };
         found.extend(preload::group_cautions(&group));
-        found.extend(preload::window_cautions(&group));
+        let largest = prepared.largest_torque(joint, fastener);
+        found.extend(preload::window_cautions(&group, largest));
         for (case, named) in joint.service.cases.iter().enumerate() {
             let force = preload::force_band(fastener).low;
             let left = prepared.balance(joint, (case, &Realisation::losing(1.0)), force);

@@ -283,6 +283,8 @@ pub struct Rise {
     pub interface_drop: Band,
     /// Film drop from the sink surface to the coolant, where there is a film.
     pub coolant_drop: Option<f64>,
+    /// Its low and high, where its film is stated with a spread and no other takes heat beside it.
+    pub coolant_drop_ends: Option<[f64; 2]>,
 }
 
 /// Whether a requirement is met.

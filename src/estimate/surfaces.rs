@@ -173,14 +173,7 @@ impl Facets {
             };
         }
         let factor = |scatter: f64, place: f64| scatter.powf(deviations(place));
-        let pressure = if joint.uncertain.is_empty() {
-            1.0
-        } else {
-            joint.gas_pressure_factor(&at.stated)
-        };
-        found.gas = self
-            .gas
-            .map(|gas| gas.at_pressure(pressure).with(factor(GAS_FACTOR, at.gas)));
+        found.gas = self.gas.map(|gas| gas.with(factor(GAS_FACTOR, at.gas)));
         found.solid_factor = factor(self.solid, at.law);
         found.filler_factor = if self.filler > 1.0 {
             factor(self.filler, at.filler)

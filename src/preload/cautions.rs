@@ -55,24 +55,33 @@ pub fn group_cautions(group: &Group<'_>) -> Vec<Caution> {
     found
 }
 
-/// Cautions that belong to a printed torque window.
-pub fn window_cautions(group: &Group<'_>) -> Vec<Caution> {
+/// Cautions that belong to a printed torque window, with its largest torque, N m, and the limit that ends
+/// it: of tightening and of service.
+pub fn window_cautions(group: &Group<'_>, largest: Option<(f64, &'static str)>) -> Vec<Caution> {
+    let name = group.name;
     let mut found = Vec::new();
-    if let Some((torque, limit)) = largest_torque(group.fastener, group.supports) {
+    if let Some((torque, limit)) = largest {
         found.push(caution(
             "preload/no-torque-card",
             format!(
-                "{}: {torque:.3} N·m is estimated from minimum strengths and ends at {limit}; it replaces neither \
-                 the torque card of the product nor a trial on the real stack.",
-                group.name
+                "{name}: {torque:.3} N·m is estimated from minimum strengths and ends at {limit}; tightening and service \
+                 under the stated loads and temperatures were looked at. It replaces neither the torque card of the \
+                 product nor a trial on the real stack."
+            ),
+        ));
+    } else if let Some((torque, _)) = largest_torque(group.fastener, group.supports) {
+        found.push(caution(
+            "preload/no-torque-card",
+            format!(
+                "{name}: tightening alone would bear {torque:.3} N·m, but at no torque does the bolt hold in service under \
+                 the stated loads and temperatures: no torque is to be released."
             ),
         ));
     }
     found.push(caution(
         "preload/slip-and-fatigue",
         format!(
-            "{}: external load, slip, fatigue and vibration are not in these limits.",
-            group.name
+            "{name}: slip, fatigue, vibration and loads across the bolts are not in these limits."
         ),
     ));
     found

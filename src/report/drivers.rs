@@ -17,7 +17,7 @@ use crate::{
 const NAME: usize = 28;
 /// Share of no input alone above which few extreme draws are behind the shares.
 const MUCH: f64 = 0.5;
-/// Total share below which an input is not worth a remedy.
+/// Total share, and share of the band, below which an input is not worth a remedy.
 const WORTH_A_LINE: f64 = 0.01;
 
 /// The ranking as a table, with what to do about the inputs that matter.
@@ -62,7 +62,7 @@ pub fn text(ranking: &Ranking) -> String {
     let mut text = format!("{}\n", plain(&ranking.title));
     let _ = writeln!(
         text,
-        "what drives {target}, {} case; field {}, {}\n\
+        "what drives {target}, {} case; field {}, {}; the input first that narrows the band most if known\n\
          {} {unit}, low {} to high {}\n\n{table}",
         ranking.case,
         ranking.field,
@@ -80,7 +80,7 @@ pub fn text(ranking: &Ranking) -> String {
         format!("{} belongs to no input alone", percent(ranking.interaction)),
         "alone: this input at its 5 % and 95 %, all others nominal; known: the band if this input were known to be nominal".to_owned(),
         if ranking.interaction > MUCH {
-            "few extreme draws hold most of the variance: go by the last columns, which look at the band from 5 % to 95 %".to_owned()
+            "few extreme draws hold most of the variance: go by the order and the last columns, which look at the band from 5 % to 95 %".to_owned()
         } else {
             String::new()
         },
@@ -114,7 +114,7 @@ fn remedies(ranking: &Ranking) -> String {
     let told: Vec<_> = ranking
         .inputs
         .iter()
-        .filter(|input| input.index.total.value >= WORTH_A_LINE)
+        .filter(|input| input.index.total.value.max(input.narrowing(&ranking.band)) >= WORTH_A_LINE)
         .take(6)
         .collect();
     if told.is_empty() {
@@ -173,6 +173,7 @@ pub fn json(ranking: &Ranking) -> Value {
         "nominal": ranking.band.nominal,
         "high": ranking.band.high,
         "interaction": ranking.interaction,
+        "ranked_by": "narrowing",
         "inputs": ranking.inputs.iter().map(|input| {
             let (first, total) = index(&input.index);
             json!({

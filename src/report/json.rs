@@ -224,6 +224,7 @@ fn rise(case: &CaseResult) -> Value {
             "hottest_band": band(&rise.hottest),
             "interface_drop": band(&rise.interface_drop),
             "coolant_drop": rise.coolant_drop,
+            "coolant_drop_ends": rise.coolant_drop_ends,
         })
     })
 }

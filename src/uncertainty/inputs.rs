@@ -4,7 +4,7 @@ use std::sync::Arc;
 
 use crate::{
     estimate::{Chain, Realisation},
-    joint::{Bounds, Finish, Friction, Joint, Medium, Tightening, TorqueTightening, What},
+    joint::{Bounds, Finish, Friction, Joint, Tightening, TorqueTightening, What},
     numerics::distribution::deviations,
 };
 
@@ -406,8 +406,7 @@ pub fn inputs(chain: &Chain) -> Vec<Input> {
     if joint.every_filler().any(|filler| filler.factor > 1.0) {
         found.push(FILLER.normal());
     }
-    let open = (0..joint.interfaces()).any(|interface| joint.filler(interface).is_none());
-    let in_gas = open && matches!(joint.service.medium, Medium::Gas { .. });
+    let in_gas = joint.gas_conducts();
     if in_gas {
         found.push(GAS.normal());
     }

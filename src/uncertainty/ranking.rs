@@ -90,7 +90,7 @@ pub struct Ranking {
     pub interaction: f64,
     /// Whether the shares are those of the logarithm of the answer.
     pub scale: Scale,
-    /// The inputs, the largest total share first.
+    /// The inputs, the one first whose knowledge narrows the band most.
     pub inputs: Vec<Ranked>,
 }
 
@@ -142,7 +142,8 @@ fn width(band: &Band) -> f64 {
         .map_or(0.0, |(high, low)| high - low)
 }
 
-/// Ranks the inputs of a joint by their share in the spread of one answer, in its worst case.
+/// Ranks the inputs of a joint by how much narrower the band of one answer gets when they are known, in
+/// its worst case.
 pub fn ranking(chain: &Chain, options: &RankingOptions) -> Result<Ranking, Failure> {
     let joint = chain.joint();
     let case = worst_case(chain)?;
@@ -175,9 +176,14 @@ pub fn ranking(chain: &Chain, options: &RankingOptions) -> Result<Ranking, Failu
         });
     }
     let first: f64 = ranked.iter().map(|each| each.index.first.value).sum();
+    let band = asked.band(nominal, &[])?;
+    // A variance may be that of few extreme draws; what a reader buys is a narrower band.
     ranked.sort_by(|one, other| {
+        let narrowing = |each: &Ranked| each.narrowing(&band);
         let total = |each: &Ranked| each.index.total.value;
-        total(other).total_cmp(&total(one))
+        narrowing(other)
+            .total_cmp(&narrowing(one))
+            .then(total(other).total_cmp(&total(one)))
     });
     Ok(Ranking {
         title: joint.title.clone(),
@@ -187,7 +193,7 @@ pub fn ranking(chain: &Chain, options: &RankingOptions) -> Result<Ranking, Failu
         target: options.target,
         draws: options.draws.draws,
         seed: options.draws.seed,
-        band: asked.band(nominal, &[])?,
+        band,
         draw_error: chain.draw_error(case),
         interaction: 1.0 - first,
         scale,

@@ -1,7 +1,7 @@
 //! What to do about an input in this joint, with the numbers that its file states.
 
 use crate::{
-    joint::{Bounds, Friction, Joint, Tightening, TorqueTightening},
+    joint::{Bounds, Friction, Joint, Tightening, TorqueTightening, What},
     uncertainty::Input,
 };
 
@@ -19,6 +19,15 @@ pub(super) fn remedy(joint: &Joint, input: &Input) -> String {
              soft layers under the head"
                 .to_owned(),
         ),
+        "thickness of the warm plate" => thickness(joint, 0),
+        "thickness of the cold plate" => thickness(joint, joint.plates.len() - 1),
+        "bow of the warm plate" => bow(joint, 0),
+        "bow of the cold plate" => bow(joint, joint.plates.len() - 1),
+        "film of the sink" => film(joint),
+        "pressure of the gas" => joint.spread_of(What::GasPressure).map(|now| {
+            let now = range(&scaled(&now, 1e-3));
+            format!("measure or hold the pressure of service (now {now} kPa)")
+        }),
         _ => None,
     };
     told.unwrap_or_else(|| input.remedy.to_owned())
@@ -80,16 +89,49 @@ fn roughness(joint: &Joint, side: usize) -> Option<String> {
         .map(|interface| joint.finishes(interface)[side].roughness);
     let now = faces.find(Bounds::is_spread)?;
     let face = ["warm", "cold"][side];
-    let micrometres = Bounds {
-        low: now.low * 1e6,
-        nominal: now.nominal * 1e6,
-        high: now.high * 1e6,
-        ..now
-    };
     Some(format!(
         "measure Rq of the {face} face (now {} µm), or call out a closer roughness",
-        range(&micrometres)
+        range(&scaled(&now, 1e6))
     ))
+}
+
+fn thickness(joint: &Joint, plate: usize) -> Option<String> {
+    let now = joint.spread_of(What::Thickness(plate))?;
+    Some(format!(
+        "measure plate `{}` (now {} mm), or call out a closer tolerance",
+        joint.plates[plate].name,
+        range(&scaled(&now, 1e3))
+    ))
+}
+
+fn bow(joint: &Joint, plate: usize) -> Option<String> {
+    let now = joint.spread_of(What::Bow(plate))?;
+    Some(format!(
+        "measure the face of plate `{}` (now {} µm) and state a flatness_map",
+        joint.plates[plate].name,
+        range(&scaled(&now, 1e6))
+    ))
+}
+
+fn film(joint: &Joint) -> Option<String> {
+    let mut films = joint.uncertain.iter();
+    let now = films
+        .find(|each| matches!(each.what, What::Film(_)))?
+        .bounds;
+    Some(format!(
+        "measure the film on a heated dummy in the flow of service (now {} W/(m²·K)), or hold the flow closer",
+        range(&now)
+    ))
+}
+
+/// In another unit.
+fn scaled(bounds: &Bounds, factor: f64) -> Bounds {
+    Bounds {
+        low: bounds.low * factor,
+        nominal: bounds.nominal * factor,
+        high: bounds.high * factor,
+        ..*bounds
+    }
 }
 
 fn range(bounds: &Bounds) -> String {

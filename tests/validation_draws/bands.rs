@@ -143,7 +143,8 @@ fn ranking_finds_what_drives_the_contact() {
     assert!(field.index.total.value.abs() < 1e-12, "{field:?}");
     assert_eq!(field.known, found.band);
     for pair in found.inputs.windows(2) {
-        assert!(pair[0].index.total.value >= pair[1].index.total.value);
+        let narrowing = |at: usize| pair[at].narrowing(&found.band);
+        assert!(narrowing(0) >= narrowing(1), "{pair:?}");
     }
     for input in &found.inputs {
         let (first, total) = (input.index.first, input.index.total);

@@ -40,15 +40,17 @@ fn resistances(state: &State) -> [f64; 5] {
     ]
 }
 
+/// Writes a value of SI as a file states it.
+type Write = fn(f64) -> String;
+
 /// A spread in a file, and what holds the draws against it.
 struct Case<'a> {
-    name: &'a str,
+    text: &'a str,
     /// Other settings, of the joint with and without the spread alike.
     sets: &'a [&'a str],
     path: &'a str,
     spread: &'a str,
-    /// Writes a value of SI as the file states it.
-    write: &'a dyn Fn(f64) -> String,
+    write: Write,
     choice: Choice,
     /// Largest difference, relative to the value or, for those that may lie near nothing, to source to
     /// sink.
@@ -65,8 +67,7 @@ impl Case<'_> {
     /// Holds the chain at places of the spread against the chain of the joint that states the value
     /// there.
     fn holds(&self) {
-        let text = file(self.name);
-        let joint = read(&text, &self.sets(self.spread));
+        let joint = read(self.text, &self.sets(self.spread));
         assert_eq!(joint.uncertain.len(), 1, "{}", self.path);
         let bounds = joint.uncertain[0].bounds;
         let drawn = chain(&joint, self.choice);
@@ -80,7 +81,7 @@ impl Case<'_> {
             };
             let told = resistances(&drawn.state(0, &at).expect("a state"));
             let value = (self.write)(bounds.at(place));
-            let other = read(&text, &self.sets(&value));
+            let other = read(self.text, &self.sets(&value));
             let other = chain(&other, self.choice);
             let exact = other.state(0, &Realisation::default()).expect("a state");
             let exact = resistances(&exact);
@@ -104,10 +105,15 @@ impl Case<'_> {
             moved = moved.max((exact[3] / nominal.path.source_to_sink - 1.0).abs());
         }
         println!(
-            "{} {}: moves {moved:.4}, off {worst:.5?}, told {:?}",
-            self.name,
+            "{}: moves {moved:.4}, off {worst:.5?}, told {:?}",
             self.path,
             drawn.draw_error(0)
+        );
+        // A spread that moves nothing would hold whatever is read.
+        assert!(
+            moved > 10.0 * worst[3].max(1e-12),
+            "{}: {moved} {worst:?}",
+            self.path
         );
     }
 }
@@ -124,72 +130,86 @@ fn film(value: f64) -> String {
     format!("\"{value} W/(m²·K)\"")
 }
 
+/// A small joint of bent faces, which solves in a second.
+const BENT: &str = r#"
+[service]
+medium = "air"
+[[plate]]
+material = "Al 6061-T6"
+thickness = "3 mm"
+size = ["50 mm", "30 mm"]
+bow = { kind = "concave", height = "20 µm" }
+finish = { roughness = "Ra 0.8 µm", slope = 0.11 }
+[[plate]]
+material = "Al 6061-T6"
+thickness = "4 mm"
+size = ["50 mm", "30 mm"]
+finish = { roughness = "Ra 0.8 µm", slope = 0.11 }
+[fastener]
+thread = "M4"
+grade = "8.8"
+head = "socket"
+preload = "2.5 kN"
+at = [["8 mm", "15 mm"], ["42 mm", "15 mm"]]
+"#;
+
+/// Cells and grid are solved at the three values of a parabola; on this joint it missed by 0.5 % between
+/// 5.5 and 7 mm, where source to sink moves by 9 %, and by less than 0.1 % over ±10 %.
+const ON_THE_CONE: f64 = 0.006;
+
 #[test]
 fn thickness_and_film_on_the_cone_are_those_of_the_file() {
+    let text = file("case_i");
     for (path, spread, write) in [
         (
             "plate.upper.thickness",
             "\"5 mm ± 0.5 mm\"",
-            &millimetres as &dyn Fn(f64) -> String,
+            millimetres as Write,
         ),
-        ("plate.lower.thickness", "\"4 mm to 7 mm\"", &millimetres),
-        ("plate.lower.cooled.film", "\"2000 W/(m²·K) ± 30 %\"", &film),
+        ("plate.lower.thickness", "\"4 mm to 7 mm\"", millimetres),
+        ("plate.lower.cooled.film", "\"2000 W/(m²·K) ± 30 %\"", film),
         (
             "plate.lower.cooled.film",
             "\"100 W/(m²·K) to 5000 W/(m²·K)\"",
-            &film,
+            film,
         ),
     ] {
         for sets in [&[][..], &["service.medium=air"][..]] {
-            Case {
-                name: "case_i",
+            let case = Case {
+                text: &text,
                 sets,
                 path,
                 spread,
                 write,
                 choice: Choice::Cone,
-                tolerance: 0.01,
-            }
-            .holds();
+                tolerance: ON_THE_CONE,
+            };
+            case.holds();
         }
     }
 }
 
+/// Ratios are taken from the coarsest grid, whose columns are cut anew for every thickness: a solution
+/// beside another jumps by that, and by 0.5 % at ±10 % of the thickness, which moves source to sink by 8 %.
 #[test]
 fn thickness_and_film_on_solved_fields_are_those_of_the_file() {
-    for (name, path, spread, write, tolerance) in [
+    let text = file("case_i");
+    for (path, spread, write, tolerance) in [
         (
-            "case_i",
             "plate.upper.thickness",
             "\"5 mm ± 0.5 mm\"",
-            &millimetres as &dyn Fn(f64) -> String,
-            0.01,
+            millimetres as Write,
+            0.008,
         ),
         (
-            "case_i",
             "plate.lower.cooled.film",
             "\"2000 W/(m²·K) ± 30 %\"",
-            &film,
-            0.01,
-        ),
-        (
-            "round_single",
-            "plate.upper.thickness",
-            "\"5 mm ± 0.5 mm\"",
-            &millimetres,
-            0.01,
-        ),
-        (
-            "case_ii_concave30",
-            "plate.upper.bow.height",
-            "\"20 µm to 60 µm\"",
-            &micrometres,
-            0.01,
+            film,
+            0.001,
         ),
     ] {
-        let before = std::time::Instant::now();
         Case {
-            name,
+            text: &text,
             sets: &[],
             path,
             spread,
@@ -198,6 +218,192 @@ fn thickness_and_film_on_solved_fields_are_those_of_the_file() {
             tolerance,
         }
         .holds();
-        println!("{:?}", before.elapsed());
     }
+    // In radius and height nothing is cut: what is left is the parabola.
+    let text = file("round_single");
+    let path = "plate.upper.thickness";
+    let spread = "\"5 mm ± 0.5 mm\"";
+    Case {
+        text: &text,
+        sets: &[],
+        path,
+        spread,
+        write: millimetres,
+        choice: solved(),
+        tolerance: 0.001,
+    }
+    .holds();
+}
+
+/// The bow closes on the way, and the ground level sees it close a little earlier.
+#[test]
+fn a_bow_on_a_solved_field_is_that_of_the_file() {
+    let case = Case {
+        text: BENT,
+        sets: &[],
+        path: "plate.upper.bow.height",
+        spread: "\"10 µm to 30 µm\"",
+        write: micrometres,
+        choice: solved(),
+        tolerance: 0.01,
+    };
+    case.holds();
+}
+
+/// Helium between 1 and 20 kPa conducts as free molecules at one end and as a continuum at the other:
+/// source to sink more than doubles, and nine solved values are read within 0.2 % on the cone and 0.6 % where
+/// ratios are taken from the coarsest grid.
+#[test]
+fn gas_pressure_is_that_of_the_file() {
+    let text = file("case_i");
+    for choice in [Choice::Cone, solved()] {
+        let case = Case {
+            text: &text,
+            sets: &["service.medium=helium"],
+            path: "service.pressure",
+            spread: "\"1 kPa to 20 kPa\"",
+            write: |value| format!("\"{value} Pa\""),
+            choice,
+            tolerance: 0.01,
+        };
+        case.holds();
+    }
+}
+
+/// Convex and concave by a height between its bounds are those of a file that states this height.
+///
+/// Between nothing, the nominal and the largest height the answer goes straight.
+#[test]
+fn a_height_of_flatness_is_that_of_the_file() {
+    let text = BENT.replace("bow = { kind = \"concave\", height = \"20 µm\" }\n", "");
+    let with = |height: &str| {
+        let finish = format!("slope = 0.11, flatness = {height} ");
+        read(&text.replacen("slope = 0.11 ", &finish, 1), &[])
+    };
+    let (spread, choice) = (with("\"10 µm to 30 µm\""), solved());
+    let drawn = chain(&spread, choice);
+    drawn.expect_draws(0).expect("draws");
+    let mut moved: f64 = 0.0;
+    for (place, height) in [(-1.0, "10"), (0.0, "20"), (0.5, "25"), (1.0, "30")] {
+        let other = with(&format!("\"{height} µm\""));
+        let other = chain(&other, choice);
+        other.expect_draws(0).expect("draws");
+        for flatness in [-1.0, 1.0] {
+            let at = |stated: Vec<f64>| Realisation {
+                stated,
+                flatness,
+                ..Realisation::default()
+            };
+            let whole = |chain: &Chain, at: &Realisation| {
+                chain.state(0, at).expect("a state").path.source_to_sink
+            };
+            let told = whole(&drawn, &at(vec![place]));
+            let exact = whole(&other, &at(Vec::new()));
+            let nominal = whole(&other, &Realisation::default());
+            moved = moved.max((exact / nominal - 1.0).abs());
+            // Half of what 10 µm and 20 µm differ by is what a straight line may miss between.
+            assert!(
+                (told / exact - 1.0).abs() < 0.01,
+                "{height} {flatness}: {told} for {exact}"
+            );
+        }
+    }
+    assert!(moved > 0.02, "{moved}");
+}
+
+/// What is told beside a draw is the joint of that draw.
+#[test]
+fn a_draw_beside_its_solution_has_its_thickness() {
+    let text = file("round_single");
+    let sets = ["plate.upper.thickness=\"5 mm ± 0.5 mm\"".to_owned()];
+    let joint = read(&text, &sets);
+    let drawn = chain(&joint, solved());
+    for place in [-0.9, 0.4] {
+        let at = Realisation {
+            stated: vec![place],
+            ..Realisation::default()
+        };
+        let [told, exact] = drawn
+            .draw_beside(0, &at)
+            .expect("solved")
+            .expect("force is left");
+        assert!((told / exact - 1.0).abs() < 0.003, "{told} {exact}");
+        let nominal = drawn
+            .draw_beside(0, &Realisation::default())
+            .expect("solved")
+            .expect("a force");
+        assert!(
+            (exact / nominal[1] - 1.0).abs() > 0.01,
+            "{exact} {nominal:?}"
+        );
+    }
+}
+
+/// Bolts that scatter for themselves are those of a file that states every force.
+///
+/// Forces between 2 and 3 kN on three bolts, drawn once from a table of random digits. The slopes along one
+/// bolt are taken once; what is left is the difference between a mean of logarithms and the logarithm of the
+/// mean, half the variance of ln F: 1.4 % of the ring sum, of which source to sink has a part.
+#[test]
+fn independent_bolts_are_those_of_the_file() {
+    let plates = BENT
+        .replace("bow = { kind = \"concave\", height = \"20 µm\" }\n", "")
+        .replace("\"air\"", "\"vacuum\"");
+    let (plates, _) = plates.split_once("[fastener]").expect("bolts stand last");
+    let plates = format!(
+        "{plates}[losses]\nsettling = \"0 µm\"\nrelaxation = \"0 %\"\ninteraction = \"0 %\"\n"
+    );
+    let places = [
+        "[\"8 mm\", \"8 mm\"]",
+        "[\"42 mm\", \"10 mm\"]",
+        "[\"24 mm\", \"23 mm\"]",
+    ];
+    let group = |preload: &str, at: &[&str]| {
+        format!(
+            "[[fastener]]\nthread = \"M4\"\ngrade = \"8.8\"\nhead = \"socket\"\npreload = \"{preload}\"\nat = [{}]\n",
+            at.join(", ")
+        )
+    };
+    let own = "[uncertainty]\nbolts = \"independent\"\n";
+    let joint = read(
+        &[&plates, &group("2 kN to 3 kN", &places), own].concat(),
+        &[],
+    );
+    let drawn = chain(&joint, solved());
+    drawn.expect_draws(0).expect("draws");
+    let mut moved: f64 = 0.0;
+    for bolts in [
+        [-0.81, 0.44, 0.93],
+        [0.27, -0.95, -0.12],
+        [0.66, 0.71, -0.88],
+    ] {
+        let at = Realisation {
+            bolts: bolts.to_vec(),
+            ..Realisation::default()
+        };
+        let state = drawn.state(0, &at).expect("a state");
+        let told = resistances(&state);
+        let groups: Vec<String> = places
+            .iter()
+            .zip(&state.conditions.forces)
+            .map(|(place, force)| group(&format!("{force} N"), &[place]))
+            .collect();
+        let other = read(&format!("{plates}{}", groups.concat()), &[]);
+        let other = chain(&other, solved());
+        let exact = resistances(&other.state(0, &Realisation::default()).expect("a state"));
+        for (reading, (told, exact)) in told.into_iter().zip(exact).enumerate() {
+            assert!(
+                (told / exact - 1.0).abs() < if reading == 0 { 0.02 } else { 0.01 },
+                "{bolts:?}, reading {reading}: {told} for {exact}"
+            );
+        }
+        let even = Realisation {
+            preload: bolts.iter().sum::<f64>() / 3.0,
+            ..Realisation::default()
+        };
+        let even = drawn.state(0, &even).expect("a state").path.source_to_sink;
+        moved = moved.max((exact[3] / even - 1.0).abs());
+    }
+    // The pattern itself does something that a common force does not.
+    assert!(moved > 0.003, "{moved}");
 }

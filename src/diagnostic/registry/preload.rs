@@ -146,9 +146,9 @@ pub(super) const ENTRIES: &[Entry] = &[
         "preload/no-torque-card",
         "The largest torque is an estimate, not a torque card",
         [
-            "It follows from catalogue friction and minimum strengths. It knows nothing of damage, \
-             re-use, tool error beyond the stated tolerance, service loads or the rules that apply \
-             to the hardware.",
+            "It follows from catalogue friction and minimum strengths, at assembly and in service under \
+             the stated axial loads and temperatures. It knows nothing of damage, re-use, tool error \
+             beyond the stated tolerance, other loads or the rules that apply to the hardware.",
             "Do not release it to a shop. Torques for hardware come from the applicable code or \
              standard, tests on the real stack and a responsible, qualified engineer.",
         ],
@@ -157,8 +157,8 @@ pub(super) const ENTRIES: &[Entry] = &[
         "preload/slip-and-fatigue",
         "Slip and fatigue are not checked",
         [
-            "The estimate checks tightening alone. A joint under vibration, shock, shear or changing \
-             load may slip, loosen or fail by fatigue at clamp forces that are thermally perfect.",
+            "The estimate checks tightening and a steady load along the bolts alone. A joint under \
+             vibration, shock, shear or changing load may slip, loosen or fail by fatigue at clamp forces that are thermally perfect.",
             "Check the joint for its loads by the applicable code (VDI 2230, NASA-STD-5020 and the \
              like), at low clamp force for slip and gapping and at high force for strength. The \
              engineer responsible for the structure decides.",

@@ -119,7 +119,7 @@ impl ElasticModel {
         }
     }
 
-    /// The plates of a joint that differs in thickness, bow or film; what is known of the contact goes
+    /// The plates of a joint that differs in thickness, bow, film or gas; what is known of the contact goes
     /// along where it is the same.
     pub(super) fn remade(&self, joint: &Joint, same_contact: bool) -> Result<Self, Failure> {
         Ok(Self {

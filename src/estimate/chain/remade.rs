@@ -1,4 +1,4 @@
-//! How the answers move with values that make another joint of it: thickness, bow, film.
+//! How the answers move with values that make another joint of it: thickness, bow, film, gas pressure.
 
 use crate::{
     estimate::chain::elastic::{LEAST_FORCE, Readings, moved, readings},
@@ -40,7 +40,7 @@ pub(super) trait Remaker<E> {
 /// |---|---|
 /// | `r` | readings: logarithms of resistances, shares of source to sink |
 /// | `F` | clamp force of all bolts over the nominal one, as a logarithm |
-/// | `x_i` | logarithm of a thickness or a film, height of a bow |
+/// | `x_i` | logarithm of a thickness, a film or a pressure, height of a bow |
 ///
 /// Solved are the ends of every input and its nominal value at the least, the nominal and the largest
 /// force, and halves of the intervals where a parabola through three is not close. What several inputs do

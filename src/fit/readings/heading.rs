@@ -175,26 +175,28 @@ impl Heading {
             }
             roles.push((role, cell, unit));
         }
-        if faults.len() > before {
-            return None;
-        }
         let measured = roles.iter().find(|(role, ..)| *role == Role::Ordinate);
-        let Some((_, cell, unit)) = measured else {
-            faults.push(fault(
-                "points/heading",
-                line.span.clone(),
-                "no column holds what was measured",
-                "expected a column `h`, `conductance`, `R` or `resistance`",
-            ));
-            return None;
+        let ordinate = match measured {
+            Some((_, cell, unit)) => ordinate(cell, unit.as_deref(), faults),
+            // A heading that is not known may be the one that is missed.
+            None if faults.len() > before => None,
+            None => {
+                faults.push(fault(
+                    "points/heading",
+                    line.span.clone(),
+                    "no column holds what was measured",
+                    "expected a column `h`, `conductance`, `R` or `resistance`",
+                ));
+                None
+            }
         };
-        let ordinate = ordinate(cell, unit.as_deref(), faults)?;
         let columns: Vec<Column> = roles
             .iter()
             .filter_map(|(role, cell, unit)| {
                 column(*role, (cell, unit.as_deref()), (ordinate, faults))
             })
             .collect();
+        let ordinate = ordinate?;
         (faults.len() == before).then_some(Self {
             columns,
             ordinate,
@@ -276,7 +278,7 @@ fn ordinate(cell: &Cell, written: Option<&str>, faults: &mut Vec<Fault>) -> Opti
 fn column(
     role: Role,
     (cell, written): (&Cell, Option<&str>),
-    (ordinate, faults): (Ordinate, &mut Vec<Fault>),
+    (ordinate, faults): (Option<Ordinate>, &mut Vec<Fault>),
 ) -> Option<Column> {
     let mut size = |quantity: Quantity| -> Option<f64> {
         let Some(written) = written else {
@@ -298,12 +300,18 @@ fn column(
     };
     match role {
         Role::Abscissa(kind) => size(kind.quantity()).map(|unit| Column::Abscissa(kind, unit)),
-        Role::Ordinate => size(ordinate.quantity()).map(Column::Ordinate),
+        // What is wrong with its unit has been told.
+        Role::Ordinate => size(ordinate?.quantity()).map(Column::Ordinate),
         Role::Deviation => match written {
             Some(written) if unit(written, Quantity::Ratio).is_ok() => {
                 size(Quantity::Ratio).map(Column::Share)
             }
-            _ => size(ordinate.quantity()).map(Column::Absolute),
+            None => {
+                faults.push(no_unit(cell));
+                None
+            }
+            // Whose unit it is not known of here may be as it will.
+            _ => size(ordinate?.quantity()).map(Column::Absolute),
         },
         Role::Direction => Some(Column::Direction),
         Role::Specimen => Some(Column::Specimen),

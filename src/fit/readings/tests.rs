@@ -91,6 +91,19 @@ fn faults_of_the_heading_are_told_together() {
         told.contains("points.csv:1:29") && told.contains("has no unit"),
         "{told}"
     );
+    // A unit that is missing hides nothing of the other columns.
+    let told = faults("h, pressure [N], sigma, p\n1,2,3,4\n");
+    for (place, says) in [
+        ("points.csv:1:1", "`h` has no unit"),
+        ("points.csv:1:4", "is a force"),
+        ("points.csv:1:18", "`sigma` has no unit"),
+        ("points.csv:1:25", "says the same as"),
+    ] {
+        assert!(
+            told.contains(place) && told.contains(says),
+            "{place} {says}\n{told}"
+        );
+    }
     assert!(faults("pressure [MPa]\n1\n").contains("no column holds what was measured"));
     assert!(faults("").contains("is empty"));
     assert!(faults("# nothing\n").contains("is empty"));

@@ -1,6 +1,8 @@
 //! Values that the file states with a spread of their own, and how bolts scatter together.
 
-use crate::joint::{Bounds, CooledPart, Cooling, Engagement, Facing, FillerKind, Joint, Sink};
+use crate::joint::{
+    Bounds, CooledPart, Cooling, Engagement, Facing, FillerKind, Joint, Medium, Sink,
+};
 
 /// Lengths nearer to each other than this are one, relative.
 const SAME_LENGTH: f64 = 1e-9;
@@ -40,10 +42,13 @@ pub enum What {
 }
 
 impl What {
-    /// Whether another value makes another body or another way out for the heat, which nothing but a
-    /// solution of its own can tell.
+    /// Whether another value makes another body, another way out for the heat, or gaps that conduct many
+    /// times as well, which nothing but a solution of its own can tell.
     pub fn remakes(self) -> bool {
-        matches!(self, Self::Thickness(_) | Self::Bow(_) | Self::Film(_))
+        matches!(
+            self,
+            Self::Thickness(_) | Self::Bow(_) | Self::Film(_) | Self::GasPressure
+        )
     }
 
     /// Whether the plates touch otherwise under another value.
@@ -138,6 +143,7 @@ impl Joint {
         let stated = self.uncertain.iter().enumerate();
         stated
             .filter(|(_, each)| each.what.remakes() && each.bounds.is_spread())
+            .filter(|(_, each)| each.what != What::GasPressure || self.gas_conducts())
             .map(|(index, _)| index)
             .collect()
     }
@@ -160,6 +166,11 @@ impl Joint {
                     *bow = bow.map(|stated| value.copysign(stated));
                 }
                 What::Film(number) => joint.cool(number, *value),
+                What::GasPressure => {
+                    if let Medium::Gas { pressure, .. } = &mut joint.service.medium {
+                        *pressure = *value;
+                    }
+                }
                 _ => {}
             }
         }
@@ -231,17 +242,10 @@ impl Joint {
             .any(|each| matches!(each.what, What::Flatness(of, _) if of == plate))
     }
 
-    /// Pressure of the gas at the place of its spread over that at nominal, 1.
-    pub fn gas_pressure_factor(&self, places: &[f64]) -> f64 {
-        let nominal = |each: &Uncertain| each.bounds.nominal;
-        let stated = self
-            .uncertain
-            .iter()
-            .find(|each| each.what == What::GasPressure);
-        let there = self.stated(What::GasPressure, places);
-        stated
-            .zip(there)
-            .map_or(1.0, |(each, there)| there / nominal(each))
+    /// Whether gas stands in any interface.
+    pub fn gas_conducts(&self) -> bool {
+        let open = (0..self.interfaces()).any(|interface| self.filler(interface).is_none());
+        open && matches!(self.service.medium, Medium::Gas { .. })
     }
 
     /// A value that is stated with a spread of its own; none where it has none.

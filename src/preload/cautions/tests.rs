@@ -171,7 +171,11 @@ fn torque_window_carries_its_duties() {
             fastener,
             supports: &supports,
         };
-        window_cautions(&group).iter().map(|c| c.code).collect()
+        let largest = largest_torque(fastener, &supports);
+        window_cautions(&group, largest)
+            .iter()
+            .map(|c| c.code)
+            .collect()
     };
     assert_eq!(
         codes(&m6()),
@@ -180,4 +184,18 @@ fn torque_window_carries_its_duties() {
     let mut given = m6();
     given.tightening = Tightening::Preload(Bounds::exact(5e3));
     assert_eq!(codes(&given), ["preload/slip-and-fatigue"]);
+    // A torque that only service ends is told with that limit, and as none where none holds there.
+    let fastener = m6();
+    let group = Group {
+        name: "M6",
+        fastener: &fastener,
+        supports: &supports,
+    };
+    let told = |largest| window_cautions(&group, largest)[0].text.clone();
+    let text = told(Some((4.0, limits::IN_SERVICE)));
+    assert!(
+        text.contains("4.000 N·m") && text.contains(limits::IN_SERVICE),
+        "{text}"
+    );
+    assert!(told(None).contains("at no torque"), "{}", told(None));
 }

@@ -165,6 +165,9 @@ pub fn verdict(estimate: &Estimate, case: &CaseResult) -> String {
         );
         if let Some(drop) = rise.coolant_drop {
             let _ = write!(text, "; sink surface to coolant {} K", four(drop));
+            if let Some([low, high]) = rise.coolant_drop_ends {
+                let _ = write!(text, " ({} to {})", four(low), four(high));
+            }
         }
         if case.sink_radiates {
             let _ = write!(

@@ -1,4 +1,4 @@
-//! The joint of other thickness, bow or film on the ground level, for the draws.
+//! The joint of other thickness, bow, film or gas pressure on the ground level, for the draws.
 
 use crate::{
     estimate::{

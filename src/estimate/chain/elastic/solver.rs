@@ -125,7 +125,7 @@ pub(super) trait Solver: Debug + Send + Sync {
         range: (&[f64], [f64; 2]),
     ) -> Result<(), Failure>;
 
-    /// A solver of a joint that differs in thickness, bow or film; what is known of the contact goes along
+    /// A solver of a joint that differs in thickness, bow, film or gas; what is known of the contact goes along
     /// where it is the same.
     fn remade(&self, joint: &Joint, same_contact: bool) -> Result<Arc<dyn Solver>, Failure>;
 

@@ -83,7 +83,7 @@ impl Bank {
         })
     }
 
-    /// A bank of a joint that differs in thickness, bow or film, with the fields of this one where the
+    /// A bank of a joint that differs in thickness, bow, film or gas, with the fields of this one where the
     /// contact is the same.
     pub(super) fn remade(&self, joint: &Joint, same_contact: bool) -> Result<Self, Failure> {
         let bank = Self::new(joint, self.most_bytes, &self.watch)?;
