@@ -62,7 +62,8 @@ pub fn text(ranking: &Ranking) -> String {
     let mut text = format!("{}\n", plain(&ranking.title));
     let _ = writeln!(
         text,
-        "what drives {target}, {} case; field {}, {}; the input first that narrows the band most if known\n\
+        "what drives {target}, {} case; field {}, {}\n\
+         ranked by how much narrower the band gets when the input is known\n\
          {} {unit}, low {} to high {}\n\n{table}",
         ranking.case,
         ranking.field,
