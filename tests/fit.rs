@@ -26,15 +26,15 @@ fn readings(text: &str) -> Readings {
 
 /// A joint on the closed-form cone, its unknown fitted to readings.
 fn answer(file: &str, sets: &[&str], asked: (&str, [&str; 2]), points: &str) -> Answer {
-    answer_with(file, sets, asked, (128, points))
+    answer_with(file, sets, asked, (Choice::Cone, 128, points))
 }
 
-/// The same with so many draws of the other inputs.
+/// The same on a field, with so many draws of the other inputs.
 fn answer_with(
     file: &str,
     sets: &[&str],
     (asked, ends): (&str, [&str; 2]),
-    (draws, points): (u32, &str),
+    (choice, draws, points): (Choice, u32, &str),
 ) -> Answer {
     let text = fs::read_to_string(file).expect("the joint is there");
     let reader = |more: &[String]| {
@@ -47,7 +47,7 @@ fn answer_with(
     };
     let bench = Bench {
         reader: &reader,
-        choice: Choice::Cone,
+        choice,
         watch: Watch::none(),
         case: 0,
     };

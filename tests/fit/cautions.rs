@@ -1,6 +1,6 @@
 //! What a fit of one unknown warns of: several ranges, a model that is refuted, a curve too coarse.
 
-use ringsum::{diagnostic::Caution, fit::unknown::Answer};
+use ringsum::{diagnostic::Caution, estimate::Choice, fit::unknown::Answer};
 
 use crate::answer_with;
 
@@ -12,7 +12,7 @@ fn told<'a>(answer: &'a Answer, code: &str) -> Option<&'a Caution> {
 
 fn thickness(ends: [&str; 2], draws: u32, points: &str) -> Answer {
     let asked = ("plate.lower.thickness", ends);
-    answer_with(JOINT, &[], asked, (draws, points))
+    answer_with(JOINT, &[], asked, (Choice::Cone, draws, points))
 }
 
 /// A thin plate spreads badly and a thick one is long: conductance rises and falls again with the

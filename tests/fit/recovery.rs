@@ -3,7 +3,7 @@
 use crate::answer;
 use nalgebra::DMatrix;
 use ringsum::{
-    estimate::{Chain, Choice, Realisation, Watch},
+    estimate::{Chain, Choice, Fineness, Realisation, Watch},
     fit::{
         likelihood::{Likelihood, Nuisance, Target},
         profile::{Curve, Profile, Range},
@@ -165,4 +165,26 @@ fn readings_without_sigma_tell_their_own_scatter() {
         Likelihood::of(&target, &nuisance, Some((scatter, freedom))).expect("positive");
     // Student's t with three degrees at 95 %: 2.353363, tables.
     assert!((likelihood.threshold.sqrt() - 2.353363).abs() < 1e-5);
+}
+
+/// On a solved field too: readings made with the roughness of the file, Rq 1.131 µm, lead back to it.
+///
+/// The conductances are the field's own, by `estimate --resolution fast` at three forces, with five digits.
+/// The other inputs are integrated out about their means, of which settling and relaxation are no nominal
+/// values: half of them takes force, for which a face 2 % smoother makes up.
+#[test]
+fn a_roughness_is_found_again_on_a_solved_field() {
+    let choice = Choice::elastic(Fineness::Fast, 1_000_000_000);
+    let points =
+        "force [kN], conductance [W/K], sigma [%]\n1, 2.2274, 1\n2, 2.4235, 1\n4, 2.5680, 1\n";
+    let ends = ["Rq 0.2 µm", "Rq 5 µm"];
+    let file = "tests/data/joints/round_single.toml";
+    let found = crate::answer_with(file, &[], ("roughness", ends), (choice, 64, points));
+    assert_eq!(found.field, "elastic");
+    let value = |share: f64| 0.2 * 25.0_f64.powf(share);
+    let best = value(found.profile.best);
+    assert!((best / 1.131_37 - 1.0).abs() < 0.04, "{best}");
+    let [low, high] = found.profile.interval.map(value);
+    assert!(low < 1.0 && high > 1.3 && high < 4.0, "{low} {high}");
+    assert!(found.cautions.is_empty(), "{:?}", found.cautions);
 }

@@ -341,13 +341,19 @@ fn a_draw_beside_its_solution_has_its_thickness() {
 
 /// Bolts that scatter for themselves are those of a file that states every force.
 ///
-/// Forces between 2 and 3 kN on three bolts, drawn once from a table of random digits. The slopes along one
-/// bolt are taken once; what is left is the difference between a mean of logarithms and the logarithm of the
-/// mean, half the variance of ln F: 1.4 % of the ring sum, of which source to sink has a part.
+/// Forces between 0.8 and 1.2 kN on three bolts, drawn once from a table of random digits; heat enters beside
+/// the first of them, and rough faces in vacuum make its force count: against three equal forces of the same
+/// sum source to sink moves by 2 to 6 %. The slopes along one bolt are taken once; what is left is of second
+/// order: of the ring sum the difference between a mean of logarithms and the logarithm of the mean, half the
+/// variance of ln F or 1 %; of the rest 0.1 %.
 #[test]
 fn independent_bolts_are_those_of_the_file() {
     let plates = BENT
-        .replace("bow = { kind = \"concave\", height = \"20 µm\" }\n", "")
+        .replace(
+            "bow = { kind = \"concave\", height = \"20 µm\" }",
+            "heated = { centre = [\"8 mm\", \"8 mm\"], size = [\"12 mm\", \"12 mm\"] }",
+        )
+        .replace("0.8 µm", "6.3 µm")
         .replace("\"air\"", "\"vacuum\"");
     let (plates, _) = plates.split_once("[fastener]").expect("bolts stand last");
     let plates = format!(
@@ -366,7 +372,7 @@ fn independent_bolts_are_those_of_the_file() {
     };
     let own = "[uncertainty]\nbolts = \"independent\"\n";
     let joint = read(
-        &[&plates, &group("2 kN to 3 kN", &places), own].concat(),
+        &[&plates, &group("0.8 kN to 1.2 kN", &places), own].concat(),
         &[],
     );
     let drawn = chain(&joint, solved());
@@ -393,7 +399,7 @@ fn independent_bolts_are_those_of_the_file() {
         let exact = resistances(&other.state(0, &Realisation::default()).expect("a state"));
         for (reading, (told, exact)) in told.into_iter().zip(exact).enumerate() {
             assert!(
-                (told / exact - 1.0).abs() < if reading == 0 { 0.02 } else { 0.01 },
+                (told / exact - 1.0).abs() < if reading == 0 { 0.015 } else { 0.003 },
                 "{bolts:?}, reading {reading}: {told} for {exact}"
             );
         }
@@ -404,6 +410,6 @@ fn independent_bolts_are_those_of_the_file() {
         let even = drawn.state(0, &even).expect("a state").path.source_to_sink;
         moved = moved.max((exact[3] / even - 1.0).abs());
     }
-    // The pattern itself does something that a common force does not.
-    assert!(moved > 0.003, "{moved}");
+    // Forces taken as their mean would be off by this.
+    assert!(moved > 0.04, "{moved}");
 }
