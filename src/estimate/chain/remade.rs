@@ -199,7 +199,7 @@ impl Axis {
         };
         for end in [bounds.low, bounds.high] {
             let x = scale.put(end);
-            if x != nominal {
+            if (x - nominal).abs() > 0.0 {
                 let moves = solve(x)?;
                 axis.insert(x, moves);
             }

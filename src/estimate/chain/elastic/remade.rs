@@ -73,16 +73,15 @@ impl ElasticModel {
             depth: Depth::Solved,
         };
         if values.is_empty() {
-            return one(self.solver.paths(joint, GROUND, &[state])?);
+            return Ok(one(self.solver.paths(joint, GROUND, &[state])?));
         }
         let other = chain.remade(&values)?;
         let conditions = other.conditions_at(case, self.warmth(chain, case)?, at)?;
-        other
-            .ground_paths(&[State {
-                conditions,
-                ..state
-            }])
-            .and_then(one)
+        let state = State {
+            conditions,
+            ..state
+        };
+        Ok(one(other.ground_paths(&[state])?))
     }
 }
 
@@ -148,14 +147,14 @@ impl Remaker<Failure> for Beside<'_> {
         let solved = self.solved(values, |nominal| {
             vec![departed(nominal, &(departure, Depth::Solved))]
         })?;
-        Ok([told, one(solved)?])
+        Ok([told, one(solved)])
     }
 }
 
 /// The only path of some.
-fn one(paths: Vec<Path>) -> Result<Path, Failure> {
+fn one(paths: Vec<Path>) -> Path {
     match paths.into_iter().next() {
-        Some(path) => Ok(path),
+        Some(path) => path,
         None => unreachable!("one state has one path"),
     }
 }
