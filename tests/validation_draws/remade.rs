@@ -104,11 +104,6 @@ impl Case<'_> {
             let nominal = drawn.state(0, &Realisation::default()).expect("a state");
             moved = moved.max((exact[3] / nominal.path.source_to_sink - 1.0).abs());
         }
-        println!(
-            "{}: moves {moved:.4}, off {worst:.5?}, told {:?}",
-            self.path,
-            drawn.draw_error(0)
-        );
         // A spread that moves nothing would hold whatever is read.
         assert!(
             moved > 10.0 * worst[3].max(1e-12),
