@@ -38,8 +38,9 @@ pub struct Drawn {
 /// ```
 ///
 /// The laws are evaluated as they stand; only the surfaces behind them are approximate, and
-/// [`Chain::draw_error`] tells how much. On the cone the networks are solved for every draw. It gives
-/// what [`Chain::state`] gives, within rounding.
+/// [`Chain::draw_error`] tells how much. On the cone the networks are solved for every draw, and only
+/// what makes another joint (a thickness, a film) is read beside them. It gives what [`Chain::state`]
+/// gives, within rounding.
 /// Checked: `tests/validation_draws.rs`.
 #[derive(Clone, Debug)]
 pub struct DrawPlan<'a> {
@@ -129,7 +130,7 @@ impl DrawPlan<'_> {
 
 impl DrawPlan<'_> {
     /// What a draw is read from on a solved field, as data: for programs that evaluate the same
-    /// draws; nothing for the cone.
+    /// draws; nothing for the cone. What stated values do that make another joint is not in it.
     pub fn tables(&self) -> Value {
         match &self.field {
             Field::Cone => Value::Null,

@@ -46,7 +46,7 @@ pub(super) trait Remaker<E> {
 /// force, and halves of the intervals where a parabola through three is not close. What several inputs do
 /// together, and with faces and conductivities, is held against solutions of all at once, which the
 /// error tells.
-/// Checked: `surfaces_follow_known_answers`, `tests/validation_draws/remade.rs`.
+/// Checked: `tests/validation_draws/remade.rs`.
 #[derive(Clone, Debug)]
 pub(super) struct Remade {
     axes: Vec<Axis>,
