@@ -27,8 +27,8 @@ pub use patterns::{Pattern, rule_patterns};
 pub use rewritten::{Fasten, rewritten};
 pub use search::{Layout, Progress, Search, State, Stopped, Task};
 pub use sheets::Sheets;
-pub use size::Size;
-pub use solved::{Solution, solved};
+pub use size::{Size, worst_case};
+pub use solved::{InCase, Solution, banded, solved};
 
 /// Why a search cannot run.
 #[derive(Clone, Debug, PartialEq, thiserror::Error)]
