@@ -5,6 +5,7 @@
 //! of each other, so that a search can stop after any unit, go on later, and run on any number of
 //! threads with the same answer.
 
+mod alternatives;
 mod answer;
 mod bolt;
 mod constraints;
@@ -19,6 +20,7 @@ mod sheets;
 mod size;
 mod solved;
 
+pub use alternatives::{Again, alternatives};
 pub use answer::{Answer, Row, Verdict};
 pub use constraints::{Constraints, Defaults};
 pub use digest::digest;

@@ -15,16 +15,18 @@ use crate::{
 };
 use std::path::{Path, PathBuf};
 
-/// What a command says of one joint, in every form.
-pub struct Answer {
+/// What a command says of one joint; each form is made where it is asked for alone.
+pub trait Answer {
     /// For people.
-    pub text: String,
+    fn text(&self) -> String;
     /// For programs.
-    pub object: serde_json::Value,
+    fn object(&self) -> serde_json::Value;
     /// The cells of its lines of the table.
-    pub rows: Vec<Vec<String>>,
+    fn rows(&self) -> Vec<Vec<String>>;
     /// How it ended.
-    pub outcome: Outcome,
+    fn outcome(&self) -> Outcome {
+        Outcome::Done
+    }
 }
 
 /// In which form the answers of a command are given.
@@ -50,7 +52,8 @@ pub struct Answers<'a> {
 /// How a command reads one joint.
 type Read<'a> = dyn Fn(&Path, &mut Console) -> Result<(Source, Joint), Refused> + Sync + 'a;
 /// What a command finds of one joint.
-type Find<'a> = dyn Fn(&Joint, &mut Console) -> Result<Answer, Trouble> + Sync + 'a;
+type Find<'a> =
+    dyn Fn((&Source, &Joint), &mut Console) -> Result<Box<dyn Answer + 'a>, Trouble> + Sync + 'a;
 
 impl<'a> Answers<'a> {
     /// Checks every target before anything is computed.
@@ -77,13 +80,15 @@ impl<'a> Answers<'a> {
 
     /// Works through the files, also after one at fault.
     pub fn run(self, console: &mut Console, read: &Read, find: &Find) -> Result<Outcome, Trouble> {
-        let outcome = self.batch.run(&self.files, console, &|index, path, console| {
-            if !self.json && self.out.is_none() && self.given > 1 {
-                let gap = if index > 0 { "\n" } else { "" };
-                console.result(&format!("{gap}{}:\n", input::name(path)))?;
-            }
-            self.one((index, path), console, (read, find))
-        })?;
+        let outcome = self
+            .batch
+            .run(&self.files, console, &|index, path, console| {
+                if !self.json && self.out.is_none() && self.given > 1 {
+                    let gap = if index > 0 { "\n" } else { "" };
+                    console.result(&format!("{gap}{}:\n", input::name(path)))?;
+                }
+                self.one((index, path), console, (read, find))
+            })?;
         if let Some(out) = self.out {
             console.message(&out.finish()?);
         }
@@ -96,8 +101,8 @@ impl<'a> Answers<'a> {
         console: &mut Console,
         (read, find): (&Read, &Find),
     ) -> Result<Outcome, Trouble> {
-        let (name, joint) = match read(path, console) {
-            Ok((source, joint)) => (source.name, joint),
+        let (source, joint) = match read(path, console) {
+            Ok(read) => read,
             Err(refused) => {
                 let row = self
                     .table
@@ -106,16 +111,21 @@ impl<'a> Answers<'a> {
                 return Err(refused.trouble());
             }
         };
-        match find(&joint, console) {
-            Ok(mut answer) => {
+        let name = &source.name;
+        match find((&source, &joint), console) {
+            Ok(answer) => {
                 if self.json || self.out.is_some() {
-                    answer.object["file"] = name.as_str().into();
-                    let rows = self.table.of_file(&name, &answer.rows);
-                    self.put(index, (&answer.object, rows), console)?;
+                    let mut object = answer.object();
+                    object["file"] = name.as_str().into();
+                    let rows = match &self.out {
+                        Some(_) => self.table.of_file(name, &answer.rows()),
+                        None => String::new(),
+                    };
+                    self.put(index, (&object, rows), console)?;
                 } else {
-                    console.result(&answer.text)?;
+                    console.result(&answer.text())?;
                 }
-                Ok(answer.outcome)
+                Ok(answer.outcome())
             }
             Err(trouble) => {
                 let (message, ended) = match &trouble {
@@ -124,9 +134,9 @@ impl<'a> Answers<'a> {
                     Trouble::Output(_) | Trouble::Faults(_) => return Err(trouble),
                 };
                 let object = serde_json::json!({ "file": name, "ok": false, "failure": message });
-                let row = self.table.without(&name, ended, &message);
+                let row = self.table.without(name, ended, &message);
                 self.put(index, (&object, row), console)?;
-                Err(trouble.of_file(&name))
+                Err(trouble.of_file(name))
             }
         }
     }

@@ -125,19 +125,14 @@ impl Drivers {
         Answers::new(&self.batch, &self.files, &form)?.run(
             console,
             &|path, console| check::read(path, &self.sets, console),
-            &|joint, console| {
+            &|(_, joint), console| {
                 let found = self.found(joint)?;
                 if let Some((format, target)) = &figure {
                     let drawing = Drawing::Tornado(Box::new(found.clone()));
                     target.write(&chain::render(&drawing, *format)?)?;
                     console.message(&format!("wrote {}\n", target.path.display()));
                 }
-                Ok(Answer {
-                    text: report::drivers::text(&found),
-                    object: report::drivers::json(&found),
-                    rows: csv::drivers(&found),
-                    outcome: Outcome::Done,
-                })
+                Ok(Box::new(found))
             },
         )
     }
@@ -162,5 +157,19 @@ impl Drivers {
             watch: self.batch.watch(),
         };
         chain::ranking(&task, &options)
+    }
+}
+
+impl Answer for Ranking {
+    fn text(&self) -> String {
+        report::drivers::text(self)
+    }
+
+    fn object(&self) -> serde_json::Value {
+        report::drivers::json(self)
+    }
+
+    fn rows(&self) -> Vec<Vec<String>> {
+        csv::drivers(self)
     }
 }

@@ -13,8 +13,7 @@ use crate::{
     },
     joint::Joint,
     report::{
-        csv,
-        json, media,
+        csv, json, media,
         text::{self, Detail},
     },
 };
@@ -107,23 +106,14 @@ impl Estimate {
         Answers::new(&self.batch, &self.files, &form)?.run(
             console,
             &|path, console| check::read_variant(path, (&self.sets, variant), console),
-            &|joint, _| self.answer(joint),
-        )
-    }
-
-    fn answer(&self, joint: &Joint) -> Result<Answer, Trouble> {
-        let found = self.found(joint)?;
-        let caution = self.strict && found.estimate.has_cautions();
-        Ok(Answer {
-            text: self.text(&found),
-            object: self.object(&found),
-            rows: csv::estimates(&found.estimate, &joint.mass()),
-            outcome: if caution {
-                Outcome::Cautioned
-            } else {
-                Outcome::Done
+            &|(_, joint), _| {
+                Ok(Box::new(Told {
+                    asked: &self,
+                    found: self.found(joint)?,
+                    joint: joint.clone(),
+                }))
             },
-        })
+        )
     }
 
     /// The estimate of a joint and what was asked for beside it.
@@ -183,5 +173,34 @@ impl Estimate {
         report.push_str(&text::rings(rings));
         report.push_str(&text::ring_sum(estimate, rings));
         report
+    }
+}
+
+/// What is told of one joint.
+struct Told<'a> {
+    asked: &'a Estimate,
+    found: Estimated,
+    joint: Joint,
+}
+
+impl Answer for Told<'_> {
+    fn text(&self) -> String {
+        self.asked.text(&self.found)
+    }
+
+    fn object(&self) -> serde_json::Value {
+        self.asked.object(&self.found)
+    }
+
+    fn rows(&self) -> Vec<Vec<String>> {
+        csv::estimates(&self.found.estimate, &self.joint.mass())
+    }
+
+    fn outcome(&self) -> Outcome {
+        if self.asked.strict && self.found.estimate.has_cautions() {
+            Outcome::Cautioned
+        } else {
+            Outcome::Done
+        }
     }
 }

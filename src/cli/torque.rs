@@ -9,11 +9,13 @@ use crate::{
         console::{Console, Outcome, Trouble},
         draws::Draws,
         field::Field,
+        input::{self, Source},
         output::{self, Existing},
     },
     estimate::TorqueSweep,
     figures::Drawing,
-    joint::Joint,
+    joint::{self, Joint},
+    layout,
     report::{csv, json, sweep},
     uncertainty::{CONFIDENCE, SweepOptions},
 };
@@ -79,9 +81,16 @@ impl Torque {
         }
         let existing = Existing::from_force(self.force);
         let figure = answers::figure(self.draw.as_deref(), &self.files, existing)?;
-        if let Some(folder) = self.out.as_deref().filter(|path| output::format(path).is_ok()) {
+        if let Some(folder) = self
+            .out
+            .as_deref()
+            .filter(|path| output::format(path).is_ok())
+        {
             return Err(Trouble::usage(
-                format!("--out names a folder for results, and `{}` a figure", folder.display()),
+                format!(
+                    "--out names a folder for results, and `{}` a figure",
+                    folder.display()
+                ),
                 "--draw FIGURE draws the curve",
             ));
         }
@@ -93,24 +102,19 @@ impl Torque {
         Answers::new(&self.batch, &self.files, &form)?.run(
             console,
             &|path, console| check::read(path, &self.sets, console),
-            &|joint, console| {
-                let found = self.found(joint)?;
+            &|(source, joint), console| {
+                let found = self.found(joint, source)?;
                 if let Some((format, target)) = &figure {
                     let drawing = Drawing::Torque(Box::new(found.clone()));
                     target.write(&chain::render(&drawing, *format)?)?;
                     console.message(&format!("wrote {}\n", target.path.display()));
                 }
-                Ok(Answer {
-                    text: sweep::torque(&found),
-                    object: json::torque(&found),
-                    rows: csv::torques(&found),
-                    outcome: Outcome::Done,
-                })
+                Ok(Box::new(found))
             },
         )
     }
 
-    fn found(&self, joint: &Joint) -> Result<TorqueSweep, Trouble> {
+    fn found(&self, joint: &Joint, source: &Source) -> Result<TorqueSweep, Trouble> {
         let groups = joint.fasteners.len();
         if self.group as usize > groups {
             return Err(Trouble::usage(
@@ -134,6 +138,30 @@ impl Torque {
             choice: self.field.choice()?,
             watch: self.batch.watch(),
         };
-        chain::torque_sweep(&task, &options)
+        // As `check::read` found it, changed in one thing.
+        let folder = &source.folder;
+        let again = |text: &str, sets: &[String]| {
+            let sets = [self.sets.as_slice(), sets].concat();
+            let files = |name: &str| input::table(folder, name);
+            joint::read_with_files(text, &sets, &files).map_err(|told| told.first())
+        };
+        let group = options.group;
+        chain::torque_sweep(&task, &options, &|| {
+            layout::alternatives((joint, group), &source.text, &again)
+        })
+    }
+}
+
+impl Answer for TorqueSweep {
+    fn text(&self) -> String {
+        sweep::torque(self)
+    }
+
+    fn object(&self) -> serde_json::Value {
+        json::torque(self)
+    }
+
+    fn rows(&self) -> Vec<Vec<String>> {
+        csv::torques(self)
     }
 }

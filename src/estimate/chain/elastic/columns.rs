@@ -173,6 +173,10 @@ impl Solver for Columns {
         self.bank.tabulate(joint, level, range)
     }
 
+    fn forget(&self) {
+        self.bank.forget();
+    }
+
     fn forms(&self, joint: &Joint) -> &'static [Variant] {
         let layered = (0..joint.interfaces()).all(|interface| joint.is_layered(interface));
         if layered { &FORMS[..2] } else { &FORMS }

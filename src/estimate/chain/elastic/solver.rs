@@ -125,6 +125,9 @@ pub(super) trait Solver: Debug + Send + Sync {
         range: (&[f64], [f64; 2]),
     ) -> Result<(), Failure>;
 
+    /// Lets go of fields that may be asked for again; they are solved anew then.
+    fn forget(&self) {}
+
     /// What bounds the form of its field.
     fn forms(&self, joint: &Joint) -> &'static [Variant];
 
