@@ -2,7 +2,7 @@
 
 use crate::{
     catalog,
-    joint::{Arrange, Joint, Tightening},
+    joint::{Joint, Tightening},
     layout::{
         Constraints, Failure,
         rewritten::{placed, threaded},
@@ -95,7 +95,7 @@ fn read(text: Result<String, Failure>, again: &Again) -> Result<Joint, String> {
 
 /// A joint whose group keeps edge distance and pitch; why it does not.
 fn kept(joint: Joint, group: usize) -> Result<Joint, String> {
-    let arrange = joint.arrange.clone().unwrap_or_else(Arrange::default);
+    let arrange = joint.arrange.clone().unwrap_or_default();
     let constraints = Constraints::of_group((&joint, group), &arrange);
     let places = &joint.fasteners[group].places;
     let edge = places.iter().map(|place| constraints.place_miss(*place));
