@@ -14,41 +14,15 @@ use ringsum::{
     layout::{Constraints, Goal, Measure, Search, Size, Task, solved},
 };
 
+#[path = "../tests/shared/layouts.rs"]
+mod layouts;
+use layouts::{random_layouts, spearman};
+
 const TEXT: &str = include_str!("../joints/service_lid.toml");
 const FAST: Choice = Choice::elastic(Fineness::Fast, 1_000_000_000);
 const SIDES: [f64; 2] = [0.1, 0.06];
 
 type Layouts = Vec<(usize, Vec<[f64; 2]>)>;
-
-fn random(constraints: &Constraints, count: usize) -> Layouts {
-    let mut state = 12345_u64;
-    let mut uniform = move || {
-        state = state
-            .wrapping_mul(6_364_136_223_846_793_005)
-            .wrapping_add(1_442_695_040_888_963_407);
-        (state >> 11) as f64 / (1_u64 << 53) as f64
-    };
-    let mut layouts = Vec::new();
-    while layouts.len() < count {
-        let bolts = 2 + (uniform() * 7.0) as usize;
-        let places = (0..bolts).map(|_| SIDES.map(|side| (side * uniform() * 1e6).round() * 1e-6));
-        let places: Vec<[f64; 2]> = places.collect();
-        if constraints.miss(&places) <= 0.0 {
-            layouts.push((0, places));
-        }
-    }
-    layouts
-}
-
-fn ranks(values: &[f64]) -> Vec<f64> {
-    let mut order: Vec<usize> = (0..values.len()).collect();
-    order.sort_by(|one, other| values[*one].total_cmp(&values[*other]));
-    let mut ranks = vec![0.0; values.len()];
-    for (rank, index) in order.into_iter().enumerate() {
-        ranks[index] = rank as f64;
-    }
-    ranks
-}
 
 /// Processor seconds of this process in user mode, from the kernel's own account; nothing elsewhere.
 fn processor_seconds() -> f64 {
@@ -89,7 +63,10 @@ fn main() {
         choice: FAST,
     };
     let constraints = Constraints::new(&sizes[0], &arrange);
-    let layouts = random(&constraints, 1000);
+    let layouts: Layouts = random_layouts(&constraints, SIDES, 1000)
+        .into_iter()
+        .map(|places| (0, places))
+        .collect();
     let search = Search::new(task, &arrange, &sizes).expect("there is room");
     let screened = timed("1000 layouts of free places screened", || {
         search.screened(&layouts)
@@ -106,13 +83,10 @@ fn main() {
                 let mut joint = sizes[*size].joint.clone();
                 joint.fasteners[0].places.clone_from(places);
                 let found = solved(&joint, FAST, Measure::SourceToSink);
-                found.expect("the field is there").nominal
+                found.expect("the field is there").cases[0].nominal
             })
             .collect()
     });
-    let (one, other) = (ranks(&screened[..count]), ranks(&nominal));
-    let apart: f64 = one.iter().zip(&other).map(|(a, b)| (a - b).powi(2)).sum();
-    let n = count as f64;
     let mut errors: Vec<f64> = screened
         .iter()
         .zip(&nominal)
@@ -121,7 +95,7 @@ fn main() {
     errors.sort_by(f64::total_cmp);
     println!(
         "ranks of {count}: Spearman {:.4}; screened over solved {:+.1} % to {:+.1} %, median {:+.1} %",
-        1.0 - 6.0 * apart / (n * (n * n - 1.0)),
+        spearman(&screened[..count], &nominal),
         100.0 * errors[0],
         100.0 * errors[errors.len() - 1],
         100.0 * errors[errors.len() / 2],

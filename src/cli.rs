@@ -1,5 +1,6 @@
 //! Arguments, files and exit codes: the only input and output.
 
+mod answers;
 mod arrange;
 mod batch;
 mod chain;

@@ -92,6 +92,12 @@ pub struct Faults {
 }
 
 impl Faults {
+    /// What the first fault says.
+    pub fn first(&self) -> String {
+        let first = self.faults.first();
+        first.map_or_else(String::new, |(_, fault)| fault.message.clone())
+    }
+
     /// All faults as text; `path` names the file.
     pub fn shown(&self, path: &str, colour: Colour) -> String {
         let shown = self.faults.iter().map(|(source, fault)| {

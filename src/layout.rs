@@ -5,6 +5,7 @@
 //! of each other, so that a search can stop after any unit, go on later, and run on any number of
 //! threads with the same answer.
 
+mod alternatives;
 mod answer;
 mod bolt;
 mod constraints;
@@ -19,6 +20,7 @@ mod sheets;
 mod size;
 mod solved;
 
+pub use alternatives::{Again, alternatives};
 pub use answer::{Answer, Row, Verdict};
 pub use constraints::{Constraints, Defaults};
 pub use digest::digest;
@@ -27,8 +29,8 @@ pub use patterns::{Pattern, rule_patterns};
 pub use rewritten::{Fasten, rewritten};
 pub use search::{Layout, Progress, Search, State, Stopped, Task};
 pub use sheets::Sheets;
-pub use size::Size;
-pub use solved::{Solution, solved};
+pub use size::{Size, worst_case};
+pub use solved::{InCase, Solution, banded, solved};
 
 /// Why a search cannot run.
 #[derive(Clone, Debug, PartialEq, thiserror::Error)]

@@ -28,7 +28,8 @@ pub use inputs::{Input, Moves, NUMERICAL, inputs};
 pub use media::{InMedium, in_media};
 pub use ranking::{Ranked, Ranking, RankingOptions, Scale, Target, ranking};
 pub(crate) use sweep::worst_case;
-pub use sweep::{CONFIDENCE, SweepOptions, sweep_along, torque_sweep};
+pub use sweep::{CONFIDENCE, Others, SweepOptions, sweep_along, sweep_beside, torque_sweep};
+pub use trials::Alternative;
 pub use verification::{Verification, verification};
 pub use window::{FIRST, LAST, NOTHING, REQUIREMENT};
 

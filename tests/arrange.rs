@@ -126,6 +126,104 @@ fn each_layout_of_the_front_is_a_joint_that_estimate_reproduces() {
         .code(2);
 }
 
+/// Estimate of a layout that was written, as the search took it.
+fn estimated(folder: &TempDir, name: &str) -> serde_json::Value {
+    let assert = ringsum(folder)
+        .args(["estimate", name, "--resolution", "fast", "--json"])
+        .args(["--draws", "256", "--seed", "1"])
+        .assert()
+        .code(0);
+    serde_json::from_slice(&assert.get_output().stdout).expect("it is JSON")
+}
+
+/// Hot and cold, and two bolts that are not arranged: all of it counts, as `estimate` says.
+#[test]
+fn every_case_and_every_other_group_counts_up_to_the_end_of_the_band() {
+    let folder = folder();
+    fs::create_dir(folder.path().join("out")).expect("it can be made");
+    let joint = JOINT
+        .replace(
+            "temperature = \"20 °C\"",
+            "temperature = { hot = \"60 °C\", cold = \"0 °C\", assembly = \"20 °C\" }",
+        )
+        .replace("[fastener] #", "[[fastener]] #")
+        .replace("bolts = [1, 4]", "bolts = [1, 2]")
+        .replace(
+            "[arrange]",
+            "[[fastener]]\nthread = \"M4\"\ngrade = \"8.8\"\nhead = \"socket\"\ntorque = \"2 N·m\"\n\
+             at = [[\"25 mm\", \"20 mm\"]]\n\n[arrange]",
+        );
+    fs::write(folder.path().join("lid.toml"), &joint).expect("it can be written");
+    let found = json(&folder, &["--write", "out", "--checkpoint", "state.json"]);
+    assert_eq!(found["cases"], serde_json::json!(["hot", "cold"]));
+    assert_eq!(found["fixed_groups"][0], "M4 8.8, 1 place", "{found}");
+    let limit = found["limit"]["resistance"].as_f64().expect("a number");
+    let number = |value: &serde_json::Value| value.as_f64().expect("a number");
+    let mut judged = 0;
+    for row in found["rows"].as_array().expect("rows") {
+        let cases = row["cases"].as_array().expect("cases");
+        let worst = |case: &serde_json::Value| {
+            ["nominal", "least_force", "largest_force"]
+                .map(|key| number(&case[key]))
+                .into_iter()
+                .fold(0.0, f64::max)
+        };
+        let most = cases.iter().map(worst).fold(0.0, f64::max);
+        // The case shown is the worst.
+        assert!(worst(&row["resistance"]) >= most, "{row}");
+        // Pitch to the bolt that stays: three diameters, whole micrometres.
+        for place in row["at"].as_array().expect("places") {
+            let apart = (number(&place[0]) - 0.025).hypot(number(&place[1]) - 0.02);
+            assert!(apart > 0.012 - 3e-6, "{row}");
+        }
+        if row["front"] != true {
+            assert!(cases[0]["low"].is_null(), "{row}");
+            continue;
+        }
+        let name = format!(
+            "out/{:02}-m4-{}.toml",
+            number(&row["bolts"]) as usize,
+            row["pattern"].as_str().expect("a word")
+        );
+        let estimate = estimated(&folder, &name);
+        let mut highest: f64 = 0.0;
+        for (case, told) in cases
+            .iter()
+            .zip(estimate["cases"].as_array().expect("cases"))
+        {
+            assert_eq!(case["case"], told["case"], "{told}");
+            let band = &told["results"]["source_to_sink"]["resistance"];
+            for key in ["low", "nominal", "high"] {
+                // The same draws of the same field; places are rounded to micrometres alike.
+                let ratio = number(&case[key]) / number(&band[key]);
+                assert!((ratio - 1.0).abs() < 1e-9, "{key}: {case} {band}");
+            }
+            highest = highest.max(number(&case["high"]));
+        }
+        let meets = if highest <= limit { "yes" } else { "" };
+        assert_eq!(row["meets"] == "yes", meets == "yes", "{row} {limit}");
+        judged += 1;
+    }
+    assert!(judged > 0);
+    let told = ringsum(&folder)
+        .args([
+            "arrange",
+            "lid.toml",
+            "--solve",
+            "2",
+            "--resume",
+            "state.json",
+        ])
+        .assert()
+        .code(0);
+    let told = text(&told.get_output().stdout);
+    assert!(told.contains("the worst of hot and cold"), "{told}");
+    assert!(
+        told.contains("not arranged, and counted as they stand: M4 8.8, 1 place"),
+        "{told}"
+    );
+}
+
 #[test]
 fn threads_change_no_digit() {
     let folder = folder();

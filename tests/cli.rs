@@ -348,7 +348,7 @@ fn a_target_that_cannot_be_written_is_refused_before_anything_is_computed() {
         ("absent/curve.svg", "no folder"),
     ] {
         let refused = within(&folder)
-            .args(["torque", "x.toml", "--out", out])
+            .args(["torque", "x.toml", "--draw", out])
             .assert()
             .code(2);
         assert!(
@@ -738,14 +738,14 @@ fn a_torque_curve_is_told_and_drawn_without_leaving_anything_behind() {
         let command = command.args(["--draws", "20", "--field", "cone"]);
         command.args(out).assert()
     };
-    let told = sweep(&["--out", "curve.svg"]).code(0);
+    let told = sweep(&["--draw", "curve.svg"]).code(0);
     assert!(stdout(&told).contains("N·m"));
     assert_eq!(stderr(&told), "wrote curve.svg\n");
     let drawn = fs::read_to_string(folder.path().join("curve.svg")).unwrap();
     assert!(drawn.starts_with("<svg"), "{}", &drawn[..40]);
-    sweep(&["--out", "curve.svg"]).code(2).stdout_eq("");
-    sweep(&["--out", "curve.svg", "--force"]).code(0);
-    sweep(&["--out", "CURVE.PNG"]).code(0);
+    sweep(&["--draw", "curve.svg"]).code(2).stdout_eq("");
+    sweep(&["--draw", "curve.svg", "--force"]).code(0);
+    sweep(&["--draw", "CURVE.PNG"]).code(0);
     let bytes = fs::read(folder.path().join("CURVE.PNG")).unwrap();
     assert_eq!(&bytes[1..4], b"PNG");
     assert_eq!(

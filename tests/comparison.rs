@@ -162,37 +162,18 @@ fn without_draws_nobody_knows_how_surely() {
 /// that "nearly no change" is asked for at one force (see `validation_measured/trends.rs`).
 #[test]
 fn more_bolts_win_and_thicker_ones_do_not() {
-    let blocks = r#"
-[service]
-medium = "vacuum"
-temperature = "310 K"
-[[plate]]
-name = "upper"
-material = "Al 6061-T6"
-thickness = "20 mm"
-size = ["63.5 mm", "63.5 mm"]
-finish = { roughness = "Rq 1.6 µm" }
-[[plate]]
-name = "lower"
-material = "Al 6061-T6"
-thickness = "20 mm"
-size = ["63.5 mm", "63.5 mm"]
-finish = { roughness = "Rq 1.6 µm" }
-[fastener]
-thread = "M5"
-grade = "8.8"
-head = "socket"
-engagement = { kind = "tapped", length = "16 mm" }
-torque = "5 N·m"
-friction = { nut_factor = 0.2 }
-pattern = { kind = "grid", count = [2, 2], margin = "12 mm" }
-"#;
-    let four = read(blocks, &[]);
+    // Blocks of 50 mm hide the bolts: these are thinner.
+    let blocks = include_str!("data/joints/bolted_blocks.toml")
+        .replace("thickness = \"50 mm\"", "thickness = \"20 mm\"");
+    let four = read(&blocks, &[]);
     let eight = read(
-        blocks,
+        &blocks,
         &["fastener.pattern={ kind = \"edge\", count = [3, 3], margin = \"12 mm\" }"],
     );
-    let thick = read(blocks, &["fastener.thread=M8", "fastener.torque=\"8 N·m\""]);
+    let thick = read(
+        &blocks,
+        &["fastener.thread=M8", "fastener.torque=\"8 N·m\""],
+    );
     let found = compared(&[&four, &eight, &thick], Choice::Cone, &OPTIONS);
     assert_eq!(found.best, 1);
     for other in [0, 2] {

@@ -7,9 +7,9 @@ use ringsum::{
     diagnostic::{Assumption, Caution},
     estimate::{
         Band, BoltResult, CaseResult, ConeBeside, Driver, End, Estimate, Flatness, InterfaceResult,
-        Met, PlaneResult, PressureResult, Range, RequirementResult, Results, RingRow, Rise, Side,
-        SolvedField, SolverHealth, TorqueLimit, TorquePoint, TorqueSweep, TorqueWindow, Trial,
-        Worst,
+        Judged, Met, PlaneResult, PressureResult, Range, RequirementResult, Results, RingRow, Rise,
+        Side, SolvedField, SolverHealth, TorqueLimit, TorquePoint, TorqueSweep, TorqueWindow,
+        Trial, Worst,
     },
     joint::{Limit, Plane, RequirementKind},
     report::{
@@ -754,17 +754,40 @@ fn a_shut_window_names_the_limits_and_what_opens_it() {
                 low: end(2.1, REQUIREMENT),
                 high: end(2.2, LAST),
             }),
+            judged: Judged::AsSwept,
         },
         Trial {
             change: "a tool of ± 2 %".to_owned(),
             window: None,
+            judged: Judged::AsSwept,
+        },
+        Trial {
+            change: "M5 instead of M4".to_owned(),
+            window: Some(Range {
+                low: end(1.5, REQUIREMENT),
+                high: end(4.0, "yield of the bolt"),
+            }),
+            judged: Judged::Fast,
+        },
+        Trial {
+            change: "gap pad between the faces".to_owned(),
+            window: None,
+            judged: Judged::Fast,
+        },
+        Trial {
+            change: "9 bolts instead of 6".to_owned(),
+            window: None,
+            judged: Judged::Refused("no pitch".to_owned()),
         },
     ];
     let report = sweep::torque(&sweep);
     for words in [
         "window   none: heat asks for at least 2.100 N·m, and yield of the bolt ends at 2.040 N·m",
         "opened by grade A2-80: 2.100 to 2.200 N·m",
+        "opened by M5 instead of M4: 1.500 to 4.000 N·m (solved anew, fast)",
         "tried alone and not enough: a tool of ± 2 %",
+        "solved anew, fast, and not enough: gap pad between the faces",
+        "not possible: 9 bolts instead of 6: no pitch",
         "1.04 times the force",
         "(M5 of the same grade",
     ] {

@@ -1,14 +1,15 @@
 //! The ends of the torque window against a fine sweep of the same chain, on the closed-form field.
 
 use ringsum::{
-    estimate::{Options, Range, Side, TorqueSweep},
+    estimate::{Chain, Judged, Options, Range, Side, TorqueSweep, Trial},
     joint::{self, Joint},
-    uncertainty::{FIRST, REQUIREMENT, SweepOptions, torque_sweep},
+    layout,
+    uncertainty::{FIRST, REQUIREMENT, SweepOptions, sweep_beside, torque_sweep},
 };
 
 /// Four M4 in aluminium in vacuum, with a load along the bolts and a limit of the rise.
-fn joint(rise: &str, load: &str) -> Joint {
-    let text = format!(
+fn text(rise: &str, load: &str) -> String {
+    format!(
         r#"
 title = "Window"
 [service]
@@ -36,20 +37,30 @@ engagement = {{ kind = "tapped", length = "8 mm" }}
 axial_load = {{ value = "{load}", introduction = 0.5, lasting = false }}
 pattern = {{ kind = "grid", count = [2, 2], margin = "10 mm" }}
 "#
-    );
-    joint::read(&text).unwrap_or_else(|faults| panic!("{faults:#?}"))
+    )
 }
 
-fn swept(joint: &Joint, steps: usize, confidence: f64) -> TorqueSweep {
-    let options = SweepOptions {
+fn read(text: &str) -> Joint {
+    joint::read(text).unwrap_or_else(|faults| panic!("{faults:#?}"))
+}
+
+fn joint(rise: &str, load: &str) -> Joint {
+    read(&text(rise, load))
+}
+
+fn options(steps: usize, confidence: f64) -> SweepOptions {
+    SweepOptions {
         group: 0,
         from: Some(0.2),
         to: Some(3.0),
         steps,
         confidence,
         chain: Options { draws: 64, seed: 1 },
-    };
-    torque_sweep(joint, &options).expect("a sweep")
+    }
+}
+
+fn swept(joint: &Joint, steps: usize, confidence: f64) -> TorqueSweep {
+    torque_sweep(joint, &options(steps, confidence)).expect("a sweep")
 }
 
 /// First torque of a fine sweep at which the high end of the band meets the limit, and the step.
@@ -208,4 +219,106 @@ fn what_perfect_contact_fails_no_torque_meets() {
 fn the_same_digits_come_again() {
     let joint = joint(&middling(), "100 N");
     assert_eq!(swept(&joint, 5, 0.9), swept(&joint, 5, 0.9));
+}
+
+/// The window of a joint in a wide sweep, none where it is shut.
+fn window_of(text: &str) -> Option<Range> {
+    let options = SweepOptions {
+        to: Some(12.0),
+        ..options(41, 0.9)
+    };
+    torque_sweep(&read(text), &options)
+        .expect("a sweep")
+        .window
+        .both
+}
+
+/// What larger bolts, more of them and fillers open is what a sweep of the joint changed by hand says.
+#[test]
+fn joints_that_open_a_shut_window_do_so_in_a_sweep_of_their_own() {
+    // Seats of the size where the first one's would not do; room for a third bolt in a row.
+    let text = |rise: &str| {
+        text(rise, "0 N")
+            .replace(
+                "size = [\"60 mm\", \"60 mm\"]",
+                "size = [\"80 mm\", \"40 mm\"]",
+            )
+            .replace("torque =", "hole = \"4.5 mm\"\ntorque =")
+    };
+    let by_hand = |change: &str, rise: &str| {
+        let text = text(rise);
+        let (from, to) = match change {
+            "M5 instead of M4" => ("\"M4\"", "\"M5\""),
+            "M6 instead of M4" => ("\"M4\"", "\"M6\""),
+            "6 bolts instead of 4, one more in each row" => ("count = [2, 2]", "count = [3, 2]"),
+            filler => {
+                let name = filler.replace(" between the faces", "");
+                return format!("{text}[filler]\nname = \"{name}\"\n");
+            }
+        };
+        let changed = text.replace(from, to);
+        if from.starts_with('"') {
+            changed.replace("hole = \"4.5 mm\"\n", "")
+        } else {
+            changed
+        }
+    };
+    // A limit that M4 misses and M5 meets: between their best ends.
+    let best = |text: &str| {
+        let found = torque_sweep(&read(text), &options(41, 0.9)).expect("a sweep");
+        let passing = found.points.iter().filter(|point| point.passes);
+        passing
+            .map(|point| point.source_to_sink.high.expect("draws were made"))
+            .fold(f64::INFINITY, f64::min)
+    };
+    let easy = "1000 K";
+    let [m4, m5] = [text(easy), by_hand("M5 instead of M4", easy)].map(|text| best(&text));
+    assert!(m5 < m4, "{m5} {m4}");
+    let rise = format!("{} K", 20.0 * (m4 * m5).sqrt());
+    let (joint, own) = (read(&text(&rise)), text(&rise));
+    let chain = Chain::new(&joint).expect("a cone");
+    let again =
+        |text: &str, sets: &[String]| joint::read_with(text, sets).map_err(|faults| faults.first());
+    let sweep = sweep_beside(&chain, &options(5, 0.9), &|| {
+        layout::alternatives((&joint, 0), &own, &again)
+    })
+    .expect("a sweep");
+    assert!(sweep.window.both.is_none(), "{:?}", sweep.window);
+    let known = ["instead of", "between the faces"];
+    let others: Vec<&Trial> = sweep
+        .window
+        .trials
+        .iter()
+        .filter(|trial| known.iter().any(|words| trial.change.contains(words)))
+        .collect();
+    assert_eq!(others.len(), 7, "{others:#?}");
+    let mut opened = 0;
+    for trial in others {
+        if let Judged::Refused(why) = &trial.judged {
+            // M6 wants twelve millimetres to the edge and has ten; nothing else is refused.
+            assert!(
+                trial.change.starts_with("M6") && why.contains("2.0 mm"),
+                "{trial:?}"
+            );
+            continue;
+        }
+        let by_hand = window_of(&by_hand(&trial.change, &rise));
+        match (trial.window, by_hand) {
+            (None, None) => {}
+            (Some(trial_range), Some(by_hand)) => {
+                opened += 1;
+                // Both ends are found to 0.1 % of the largest torque swept, 12 N m.
+                let off = trial_range.low.torque - by_hand.low.torque;
+                let far = trial_range.high.torque - by_hand.high.torque;
+                assert!(
+                    off.abs() < 0.015 && far.abs() < 0.015,
+                    "{trial:?} {by_hand:?}"
+                );
+            }
+            (trial_window, by_hand) => {
+                panic!("{}: {trial_window:?} {by_hand:?}", trial.change)
+            }
+        }
+    }
+    assert!(opened >= 2, "{:#?}", sweep.window.trials);
 }

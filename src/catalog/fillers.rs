@@ -51,6 +51,8 @@ struct RawFiller {
     thinnest: Option<RawDatum>,
     #[serde(rename = "modulus_MPa")]
     modulus: Option<RawDatum>,
+    #[serde(rename = "density_kg_m3")]
+    density: Option<RawDatum>,
     #[serde(rename = "hardness_MPa")]
     hardness: Option<RawDatum>,
     #[serde(rename = "at_zero_cm2K_W")]
@@ -128,6 +130,7 @@ fn checked(raw: &RawFiller, sources: &Sources) -> Result<FillerRecord, CatalogFa
         thickness: values.maybe(raw.thickness.as_ref(), 1e-6)?,
         thinnest: values.maybe(raw.thinnest.as_ref(), 1e-6)?,
         modulus: values.maybe(raw.modulus.as_ref(), 1e6)?,
+        density: values.maybe(raw.density.as_ref(), 1.0)?,
         hardness: values.maybe(raw.hardness.as_ref(), 1e6)?,
         points,
         creeps: raw.creeps,

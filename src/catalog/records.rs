@@ -290,6 +290,8 @@ pub struct FillerRecord {
     pub modulus: Option<Datum>,
     /// Hardness of a foil that yields under asperities, Pa.
     pub hardness: Option<Datum>,
+    /// Density, kg/m³.
+    pub density: Option<Datum>,
     /// (pressure, Pa; area resistance, m² K/W).
     pub points: Vec<(f64, f64)>,
     /// Whether it creeps so that bolts need tightening again.

@@ -11,8 +11,8 @@ use crate::{
     figures::{ArrangePlot, Drawing, Format},
     joint::{self, Joint},
     layout::{
-        Answer, Defaults, Failure, Fasten, Goal, Progress, Row, Search, Size, State, Task, digest,
-        rewritten,
+        self, Answer, Defaults, Failure, Fasten, Goal, Progress, Row, Search, Size, State, Task,
+        digest, rewritten,
     },
     report::arrange,
 };
@@ -117,10 +117,7 @@ impl Read {
     /// Another layout of the same file, as the reader takes it.
     fn again(&self, text: &str) -> Result<Joint, String> {
         let files = |name: &str| input::table(&self.folder, name);
-        joint::read_with_files(text, &[], &files).map_err(|told| {
-            let first = told.faults.first();
-            first.map_or_else(String::new, |(_, fault)| fault.message.clone())
-        })
+        joint::read_with_files(text, &[], &files).map_err(|told| told.first())
     }
 }
 
@@ -157,7 +154,7 @@ impl Arrange {
         let stop = stopped_by_keyboard()?;
         let arrange = read.joint.arrange.clone().unwrap_or_default();
         let defaults = Defaults::of(&read.joint, &arrange);
-        let sizes = sizes(&read, &arrange, console)?;
+        let sizes = sizes((&read, &arrange), task.goal, console)?;
         let search = Search::new(task, &arrange, &sizes)?;
         let mut keeper = Keeper::new(checkpoint);
         let ended = pool.install(|| {
@@ -333,12 +330,16 @@ fn same_folder(one: &Path, other: &Path) -> bool {
     real(one).is_some() && real(one) == real(other)
 }
 
-/// The sizes that bear their torque; the others are named.
+/// The sizes that bear their torque, in the case in which the joint as stated stands worst; the others
+/// are named.
 fn sizes(
-    read: &Read,
-    arrange: &joint::Arrange,
+    (read, arrange): (&Read, &joint::Arrange),
+    goal: Goal,
     console: &mut Console,
 ) -> Result<Vec<Size>, Trouble> {
+    let target = layout::Target::of(&read.joint, goal)?;
+    let places = &read.joint.fasteners[0].places;
+    let case = layout::worst_case((&read.joint, places), &target)?;
     let tried: Vec<Option<usize>> = match arrange.sizes {
         0 => vec![None],
         count => (0..count).map(Some).collect(),
@@ -346,7 +347,7 @@ fn sizes(
     let mut sizes = Vec::new();
     let mut over = Vec::new();
     for index in tried {
-        let size = Size::new(index, alone(read, index)?)?;
+        let size = Size::in_case(index, alone(read, index)?, case)?;
         match &size.overstressed {
             Some(why) => over.push(why.clone()),
             None => sizes.push(size),

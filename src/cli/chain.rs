@@ -13,7 +13,8 @@ use crate::{
     joint::{Joint, Medium},
     pressure::elastic::Failure as Contact,
     uncertainty::{
-        self, Comparison, Contender, InMedium, Ranking, RankingOptions, SweepOptions, Verification,
+        self, Comparison, Contender, InMedium, Others, Ranking, RankingOptions, SweepOptions,
+        Verification,
     },
     units::{self, Quantity},
 };
@@ -44,10 +45,14 @@ impl<'a> Task<'a> {
     }
 }
 
-/// The torque of one group swept.
-pub fn torque_sweep(task: &Task, options: &SweepOptions) -> Result<TorqueSweep, Trouble> {
+/// The torque of one group swept, with like joints to try where its window is shut.
+pub fn torque_sweep(
+    task: &Task,
+    options: &SweepOptions,
+    others: &Others,
+) -> Result<TorqueSweep, Trouble> {
     let chain = task.chain()?;
-    task.watched(|| uncertainty::sweep_along(&chain, options))
+    task.watched(|| uncertainty::sweep_beside(&chain, options, others))
 }
 
 /// The inputs of the worst case ranked by their share in the spread of one answer.
@@ -179,6 +184,8 @@ pub fn compared(
         if let Some(columns) = columns {
             maps.push(estimate::field_map(chain, 0, columns).map_err(failed(entry))?);
         }
+        // The common draws need what is worked out already.
+        chain.forget_fields();
         contenders.push(Contender {
             name: entry.name.clone(),
             chain,

@@ -2,18 +2,22 @@
 
 use crate::{
     cli::{
+        batch::Batch,
         chain::{self, Task},
         check,
         console::{Console, Outcome, Trouble},
         drawings,
-        field::{self, Field},
+        field::Field,
+        input,
         output::{Existing, Target},
+        results,
     },
     figures::Format,
+    joint::Joint,
 };
 use clap::{Args, ValueEnum};
 use std::{
-    fs,
+    iter,
     path::{Path, PathBuf},
 };
 
@@ -26,9 +30,10 @@ const COLUMNS: usize = 400;
 /// pressure and conductance alone.
 #[derive(Debug, Args)]
 pub struct Draw {
-    /// Joint file; - reads standard input
-    file: PathBuf,
-    /// Folder for the figures; made if it does not exist
+    /// Joint files; - reads standard input
+    #[arg(required = true, value_name = "FILE")]
+    files: Vec<PathBuf>,
+    /// Folder for the figures, of several joints one in it for each; made if it does not exist
     #[arg(long, value_name = "DIR")]
     out: PathBuf,
     /// Format of the figures
@@ -45,6 +50,8 @@ pub struct Draw {
     interface: usize,
     #[command(flatten)]
     field: Field,
+    #[command(flatten)]
+    batch: Batch,
     /// Override a field: --set 'plate.box.thickness="6 mm"'
     #[arg(long = "set", value_name = "KEY=VALUE")]
     sets: Vec<String>,
@@ -65,64 +72,93 @@ enum Formats {
 }
 
 impl Draw {
-    /// Draws every figure; checks every target before computing.
+    /// Draws every figure of every file; checks every target before computing.
     pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
-        let formats: &[Format] = match self.format {
-            Formats::Svg => &[Format::Svg],
-            Formats::Png => &[Format::Png],
-            Formats::Both => &[Format::Svg, Format::Png],
+        let files = self.batch.files(&self.files);
+        input::stdin_at_most_once(&files)?;
+        let folders: Vec<PathBuf> = if self.files.len() > 1 {
+            results::apart(&files, "")?;
+            let folder = |path: &PathBuf| self.out.join(results::stem(path));
+            files.iter().map(folder).collect()
+        } else {
+            vec![self.out.clone(); files.len()]
         };
-        let existing = Existing::from_force(self.force);
-        if self.out.exists() {
-            if !self.out.is_dir() {
-                return Err(Trouble::usage(
-                    format!("`{}` is a file", self.out.display()),
-                    "--out names a folder",
-                ));
-            }
-            for name in drawings::NAMES {
-                for format in formats {
-                    Target::new(&self.path(name, *format), existing)?;
-                }
-            }
+        for folder in iter::once(&self.out).chain(&folders) {
+            self.check(folder)?;
         }
-        let (_, joint) =
-            check::read(&self.file, &self.sets, console).map_err(|refused| refused.trouble())?;
-        let task = Task {
-            joint: &joint,
-            choice: self.field.choice()?,
-            watch: field::watch(),
-        };
-        let interface = chain::interface(&joint, self.interface)?;
-        let fields = chain::fields(&task, interface, COLUMNS)?;
-        let mut files = Vec::new();
-        for (name, drawing) in drawings::of_joint(&joint, &fields) {
-            for format in formats {
-                let bytes = chain::render(&drawing, *format)?;
-                files.push((self.path(name, *format), bytes));
+        self.batch.run(&files, console, &|index, path, console| {
+            let (source, joint) =
+                check::read(path, &self.sets, console).map_err(|refused| refused.trouble())?;
+            let drawn = self.drawn(&joint, &folders[index]);
+            for path in drawn.map_err(|trouble| trouble.of_file(&source.name))? {
+                console.message(&format!("wrote {}\n", path.display()));
             }
-        }
-        make(&self.out)?;
-        for (path, bytes) in files {
-            Target::new(&path, existing)?.write(&bytes)?;
-            console.message(&format!("wrote {}\n", path.display()));
-        }
-        Ok(Outcome::Done)
+            Ok(Outcome::Done)
+        })
     }
 
-    fn path(&self, name: &str, format: Format) -> PathBuf {
-        self.out.join(match format {
-            Format::Svg => format!("{name}.svg"),
-            Format::Png => format!("{name}.png"),
-        })
+    /// Refuses a folder that is none or holds figures that are to be kept.
+    fn check(&self, folder: &Path) -> Result<(), Trouble> {
+        if !folder.exists() {
+            return Ok(());
+        }
+        if !folder.is_dir() {
+            return Err(Trouble::usage(
+                format!("`{}` is a file", folder.display()),
+                "--out names a folder",
+            ));
+        }
+        for name in drawings::NAMES {
+            for format in self.format.each() {
+                Target::new(&path(folder, (name, *format)), self.existing())?;
+            }
+        }
+        Ok(())
+    }
+
+    /// Draws the figures of one joint into its folder; which files were written.
+    fn drawn(&self, joint: &Joint, folder: &Path) -> Result<Vec<PathBuf>, Trouble> {
+        let task = Task {
+            joint,
+            choice: self.field.choice()?,
+            watch: self.batch.watch(),
+        };
+        let interface = chain::interface(joint, self.interface)?;
+        let fields = chain::fields(&task, interface, COLUMNS)?;
+        let mut files = Vec::new();
+        for (name, drawing) in drawings::of_joint(joint, &fields) {
+            for format in self.format.each() {
+                let bytes = chain::render(&drawing, *format)?;
+                files.push((path(folder, (name, *format)), bytes));
+            }
+        }
+        results::make(folder)?;
+        let mut written = Vec::new();
+        for (path, bytes) in files {
+            Target::new(&path, self.existing())?.write(&bytes)?;
+            written.push(path);
+        }
+        Ok(written)
+    }
+
+    fn existing(&self) -> Existing {
+        Existing::from_force(self.force)
     }
 }
 
-fn make(folder: &Path) -> Result<(), Trouble> {
-    fs::create_dir_all(folder).map_err(|found| {
-        Trouble::Failure(format!(
-            "the folder `{}` cannot be made: {found}",
-            folder.display()
-        ))
+impl Formats {
+    fn each(self) -> &'static [Format] {
+        match self {
+            Self::Svg => &[Format::Svg],
+            Self::Png => &[Format::Png],
+            Self::Both => &[Format::Svg, Format::Png],
+        }
+    }
+}
+
+fn path(folder: &Path, (name, format): (&str, Format)) -> PathBuf {
+    folder.join(match format {
+        Format::Svg => format!("{name}.svg"),
+        Format::Png => format!("{name}.png"),
     })
 }

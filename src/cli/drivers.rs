@@ -2,17 +2,20 @@
 
 use crate::{
     cli::{
+        answers::{self, Answer, Answers, Form},
+        batch::Batch,
         chain::{self, Task},
         check,
-        console::{Console, Layout, Outcome, Trouble},
+        console::{Console, Outcome, Trouble},
         draws,
-        field::{self, Field},
-        output::{self, Existing, Target},
+        field::Field,
+        output::Existing,
     },
     estimate::Options,
     figures::Drawing,
-    report,
-    uncertainty::{self, FEWEST_BASES, RankingOptions},
+    joint::Joint,
+    report::{self, csv},
+    uncertainty::{self, FEWEST_BASES, Ranking, RankingOptions},
 };
 use clap::{Args, ValueEnum};
 use std::path::PathBuf;
@@ -29,8 +32,9 @@ Examples:
 #[derive(Debug, Args)]
 #[command(after_help = EXAMPLES)]
 pub struct Drivers {
-    /// Joint file; - reads standard input
-    file: PathBuf,
+    /// Joint files; - reads standard input
+    #[arg(required = true, value_name = "FILE")]
+    files: Vec<PathBuf>,
     /// The answer: source to sink unless told otherwise
     #[arg(
         long,
@@ -51,13 +55,18 @@ pub struct Drivers {
     /// Override a field: --set 'plate.box.thickness="6 mm"'
     #[arg(long = "set", value_name = "KEY=VALUE")]
     sets: Vec<String>,
-    /// Print JSON, in SI
+    /// Print one JSON object per file, in SI
     #[arg(long)]
     json: bool,
-    /// Draw the bars to a file that ends in .svg or .png
+    /// Draw the bars of one joint to a file that ends in .svg or .png
     #[arg(long, value_name = "FIGURE")]
     draw: Option<PathBuf>,
-    /// Replace the figure if it exists
+    #[command(flatten)]
+    batch: Batch,
+    /// Write one JSON per file and one table, drivers.csv, to a folder instead of printing
+    #[arg(long, value_name = "DIR", conflicts_with = "json")]
+    out: Option<PathBuf>,
+    /// Replace results and figures that exist
     #[arg(long)]
     force: bool,
 }
@@ -104,17 +113,31 @@ impl Of {
 }
 
 impl Drivers {
-    /// Ranks the inputs; checks the target of the figure before computing.
+    /// Ranks the inputs of every file; checks every target before computing.
     pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
-        let figure = match &self.draw {
-            Some(path) => Some((
-                output::format(path)?,
-                Target::new(path, Existing::from_force(self.force))?,
-            )),
-            None => None,
+        let existing = Existing::from_force(self.force);
+        let figure = answers::figure(self.draw.as_deref(), &self.files, existing)?;
+        let form = Form {
+            json: self.json,
+            table: &csv::DRIVERS,
+            out: self.out.as_deref().map(|folder| (folder, existing)),
         };
-        let (_, joint) =
-            check::read(&self.file, &self.sets, console).map_err(|refused| refused.trouble())?;
+        Answers::new(&self.batch, &self.files, &form)?.run(
+            console,
+            &|path, console| check::read(path, &self.sets, console),
+            &|(_, joint), console| {
+                let found = self.found(joint)?;
+                if let Some((format, target)) = &figure {
+                    let drawing = Drawing::Tornado(Box::new(found.clone()));
+                    target.write(&chain::render(&drawing, *format)?)?;
+                    console.message(&format!("wrote {}\n", target.path.display()));
+                }
+                Ok(Box::new(found))
+            },
+        )
+    }
+
+    fn found(&self, joint: &Joint) -> Result<Ranking, Trouble> {
         if self.of == Of::Rise && joint.service.heat.is_none() {
             return Err(Trouble::usage(
                 "--of rise needs the heat, and this joint states none",
@@ -129,21 +152,24 @@ impl Drivers {
             },
         };
         let task = Task {
-            joint: &joint,
+            joint,
             choice: self.field.choice()?,
-            watch: field::watch(),
+            watch: self.batch.watch(),
         };
-        let found = chain::ranking(&task, &options)?;
-        if let Some((format, target)) = figure {
-            let drawing = Drawing::Tornado(Box::new(found.clone()));
-            target.write(&chain::render(&drawing, format)?)?;
-            console.message(&format!("wrote {}\n", target.path.display()));
-        }
-        if self.json {
-            console.json(&report::drivers::json(&found), Layout::Indented)?;
-        } else {
-            console.result(&report::drivers::text(&found))?;
-        }
-        Ok(Outcome::Done)
+        chain::ranking(&task, &options)
+    }
+}
+
+impl Answer for Ranking {
+    fn text(&self) -> String {
+        report::drivers::text(self)
+    }
+
+    fn object(&self) -> serde_json::Value {
+        report::drivers::json(self)
+    }
+
+    fn rows(&self) -> Vec<Vec<String>> {
+        csv::drivers(self)
     }
 }

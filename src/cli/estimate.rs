@@ -2,25 +2,23 @@
 
 use crate::{
     cli::{
+        answers::{Answer, Answers, Form},
         batch::Batch,
         chain::{self, Beside, Estimated, Rings, Task},
         check,
-        console::{Console, Layout, Outcome, Trouble},
+        console::{Console, Outcome, Trouble},
         draws::Draws,
         field::Field,
-        input,
         output::Existing,
-        results::Results,
     },
     joint::Joint,
     report::{
-        csv::{self, Ended},
-        json, media,
+        csv, json, media,
         text::{self, Detail},
     },
 };
 use clap::Args;
-use std::path::{Path, PathBuf};
+use std::path::PathBuf;
 
 const EXAMPLES: &str = "\
 Examples:
@@ -92,77 +90,30 @@ pub struct Estimate {
 impl Estimate {
     /// Estimates every file, also after one at fault.
     pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
-        let files = self.batch.files(&self.files);
-        input::stdin_at_most_once(&files)?;
         if let Some(twice) = chain::twice(&self.media) {
             return Err(Trouble::usage(
                 format!("`{twice}` is named twice in --media"),
                 "name each medium once",
             ));
         }
-        let out = match &self.out {
-            Some(folder) => {
-                let existing = Existing::from_force(self.force);
-                Some(Results::new(folder, &files, (existing, self.batch.part()))?)
-            }
-            None => None,
+        let existing = Existing::from_force(self.force);
+        let form = Form {
+            json: self.json,
+            table: &csv::ESTIMATES,
+            out: self.out.as_deref().map(|folder| (folder, existing)),
         };
-        let outcome = self.batch.run(&files, console, &|index, path, console| {
-            if !self.json && out.is_none() && self.files.len() > 1 {
-                let gap = if index > 0 { "\n" } else { "" };
-                console.result(&format!("{gap}{}:\n", input::name(path)))?;
-            }
-            self.one(path, (index, out.as_ref()), console)
-        })?;
-        if let Some(out) = out {
-            console.message(&out.finish()?);
-        }
-        Ok(outcome)
-    }
-
-    fn one(
-        &self,
-        path: &Path,
-        (index, out): (usize, Option<&Results>),
-        console: &mut Console,
-    ) -> Result<Outcome, Trouble> {
         let variant = self.variant.as_deref();
-        let (name, joint) = match check::read_variant(path, (&self.sets, variant), console) {
-            Ok((source, joint)) => (source.name, joint),
-            Err(refused) => {
-                let row = csv::without(&input::name(path), Ended::Faulty, &refused.first());
-                self.put(&refused.json(), (index, out, row), console)?;
-                return Err(refused.trouble());
-            }
-        };
-        let found = self.found(&joint);
-        match found {
-            Ok(found) => {
-                let caution = self.strict && found.estimate.has_cautions();
-                if self.json || out.is_some() {
-                    let rows = csv::rows(&name, &found.estimate, &joint.mass());
-                    self.put(&self.object(&name, &found), (index, out, rows), console)?;
-                } else {
-                    console.result(&self.text(&found))?;
-                }
-                Ok(if caution {
-                    Outcome::Cautioned
-                } else {
-                    Outcome::Done
-                })
-            }
-            Err(trouble) => {
-                let (message, ended) = match &trouble {
-                    Trouble::Failure(message) => (message.clone(), Ended::Failed),
-                    Trouble::Usage { message, .. } => (message.clone(), Ended::Faulty),
-                    Trouble::Output(_) | Trouble::Faults(_) => return Err(trouble),
-                };
-                let object = serde_json::json!({ "file": name, "ok": false, "failure": message });
-                let row = csv::without(&name, ended, &message);
-                self.put(&object, (index, out, row), console)?;
-                Err(trouble.of_file(&name))
-            }
-        }
+        Answers::new(&self.batch, &self.files, &form)?.run(
+            console,
+            &|path, console| check::read_variant(path, (&self.sets, variant), console),
+            &|(_, joint), _| {
+                Ok(Box::new(Told {
+                    asked: &self,
+                    found: self.found(joint)?,
+                    joint: joint.clone(),
+                }))
+            },
+        )
     }
 
     /// The estimate of a joint and what was asked for beside it.
@@ -187,24 +138,8 @@ impl Estimate {
         chain::estimate(&task, &self.draws.options(), &beside)
     }
 
-    /// Writes an object where results go to files, prints it where JSON is asked for.
-    fn put(
-        &self,
-        object: &serde_json::Value,
-        (index, out, rows): (usize, Option<&Results>, String),
-        console: &mut Console,
-    ) -> Result<(), Trouble> {
-        if let Some(out) = out {
-            out.put(index, object, rows)?;
-        } else if self.json {
-            console.json(object, Layout::of_batch(self.files.len()))?;
-        }
-        Ok(())
-    }
-
-    fn object(&self, name: &str, found: &Estimated) -> serde_json::Value {
+    fn object(&self, found: &Estimated) -> serde_json::Value {
         let mut object = json::estimate(&found.estimate);
-        object["file"] = name.into();
         if let Some(variant) = &self.variant {
             object["variant"] = variant.as_str().into();
         }
@@ -238,5 +173,34 @@ impl Estimate {
         report.push_str(&text::rings(rings));
         report.push_str(&text::ring_sum(estimate, rings));
         report
+    }
+}
+
+/// What is told of one joint.
+struct Told<'a> {
+    asked: &'a Estimate,
+    found: Estimated,
+    joint: Joint,
+}
+
+impl Answer for Told<'_> {
+    fn text(&self) -> String {
+        self.asked.text(&self.found)
+    }
+
+    fn object(&self) -> serde_json::Value {
+        self.asked.object(&self.found)
+    }
+
+    fn rows(&self) -> Vec<Vec<String>> {
+        csv::estimates(&self.found.estimate, &self.joint.mass())
+    }
+
+    fn outcome(&self) -> Outcome {
+        if self.asked.strict && self.found.estimate.has_cautions() {
+            Outcome::Cautioned
+        } else {
+            Outcome::Done
+        }
     }
 }

@@ -22,6 +22,8 @@ pub struct Source {
     pub name: String,
     /// Its text.
     pub text: String,
+    /// The folder of the tables that it names.
+    pub folder: PathBuf,
 }
 
 /// How messages call a path.
@@ -88,7 +90,11 @@ pub fn read(path: &Path) -> Result<Source, Fault> {
             Some("`ringsum new` prints a starter joint".to_owned()),
         ));
     }
-    Ok(Source { name, text })
+    Ok(Source {
+        name,
+        text,
+        folder: folder(path),
+    })
 }
 
 /// The folder beside a joint file; for standard input the current one.
@@ -143,7 +149,11 @@ pub fn points(path: &Path) -> Result<Source, Trouble> {
         table(Path::new(""), &path.display().to_string())
     };
     match text {
-        Ok(text) => Ok(Source { name, text }),
+        Ok(text) => Ok(Source {
+            name,
+            text,
+            folder: folder(path),
+        }),
         Err(why) => Err(Trouble::usage(
             format!("`{name}` cannot be read: {why}"),
             "name a table of readings; `ringsum fit --help` shows its heading",

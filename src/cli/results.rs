@@ -7,7 +7,7 @@ use crate::{
         input,
         output::{Existing, Target},
     },
-    report::csv,
+    report::csv::Table,
 };
 use std::{
     collections::BTreeMap,
@@ -20,6 +20,7 @@ use std::{
 #[derive(Debug)]
 pub struct Results {
     targets: Vec<Target>,
+    columns: &'static Table,
     table: Target,
     rows: Mutex<BTreeMap<usize, String>>,
 }
@@ -27,40 +28,23 @@ pub struct Results {
 impl Results {
     /// The files to write; the folder is made where there is none.
     pub fn new(
-        folder: &Path,
+        (folder, columns): (&Path, &'static Table),
         files: &[PathBuf],
         (existing, part): (Existing, Option<Shard>),
     ) -> Result<Self, Trouble> {
-        let mut known: BTreeMap<String, &PathBuf> = BTreeMap::new();
-        for path in files {
-            // Names that differ in case alone are one file on some systems.
-            if let Some(other) = known.insert(stem(path).to_lowercase(), path) {
-                return Err(Trouble::usage(
-                    format!(
-                        "`{}` and `{}` would both be written to `{}.json`",
-                        other.display(),
-                        path.display(),
-                        stem(path)
-                    ),
-                    "write them to folders of their own",
-                ));
-            }
-        }
-        fs::create_dir_all(folder).map_err(|found| {
-            Trouble::Failure(format!(
-                "the folder `{}` cannot be made: {found}",
-                folder.display()
-            ))
-        })?;
+        apart(files, ".json")?;
+        make(folder)?;
+        let name = columns.name;
         let table = match part {
-            None => "estimates.csv".to_owned(),
-            Some(Shard { part, of }) => format!("estimates_{part}_of_{of}.csv"),
+            None => format!("{name}.csv"),
+            Some(Shard { part, of }) => format!("{name}_{part}_of_{of}.csv"),
         };
         Ok(Self {
             targets: files
                 .iter()
                 .map(|path| Target::new(&folder.join(format!("{}.json", stem(path))), existing))
                 .collect::<Result<Vec<Target>, Trouble>>()?,
+            columns,
             table: Target::new(&folder.join(table), existing)?,
             rows: Mutex::new(BTreeMap::new()),
         })
@@ -83,7 +67,7 @@ impl Results {
     /// Writes the table, in the order of the files; tells what was written.
     pub fn finish(&self) -> Result<String, Trouble> {
         let rows = self.rows.lock().unwrap_or_else(PoisonError::into_inner);
-        let mut text = csv::header();
+        let mut text = self.columns.header();
         text.extend(rows.values().map(String::as_str));
         self.table.write(text.as_bytes())?;
         Ok(format!(
@@ -92,6 +76,36 @@ impl Results {
             rows.len()
         ))
     }
+}
+
+/// Refuses files whose results would bear the same name.
+pub fn apart(files: &[PathBuf], ending: &str) -> Result<(), Trouble> {
+    let mut known: BTreeMap<String, &PathBuf> = BTreeMap::new();
+    for path in files {
+        // Names that differ in case alone are one file on some systems.
+        if let Some(other) = known.insert(stem(path).to_lowercase(), path) {
+            return Err(Trouble::usage(
+                format!(
+                    "`{}` and `{}` would both be written to `{}{ending}`",
+                    other.display(),
+                    path.display(),
+                    stem(path)
+                ),
+                "write them to folders of their own",
+            ));
+        }
+    }
+    Ok(())
+}
+
+/// Makes a folder where there is none.
+pub fn make(folder: &Path) -> Result<(), Trouble> {
+    fs::create_dir_all(folder).map_err(|found| {
+        Trouble::Failure(format!(
+            "the folder `{}` cannot be made: {found}",
+            folder.display()
+        ))
+    })
 }
 
 /// Name of a joint file without folder and ending.

@@ -2,15 +2,21 @@
 
 use crate::{
     cli::{
+        answers::{self, Answer, Answers, Form},
+        batch::Batch,
         chain::{self, Task},
         check,
-        console::{Console, Layout, Outcome, Trouble},
+        console::{Console, Outcome, Trouble},
         draws::Draws,
-        field::{self, Field},
-        output::{self, Existing, Target},
+        field::Field,
+        input::{self, Source},
+        output::{self, Existing},
     },
+    estimate::TorqueSweep,
     figures::Drawing,
-    report::{json, sweep},
+    joint::{self, Joint},
+    layout,
+    report::{csv, json, sweep},
     uncertainty::{CONFIDENCE, SweepOptions},
 };
 use clap::Args;
@@ -19,8 +25,9 @@ use std::path::PathBuf;
 /// Resistance against torque, with the torque that strength allows
 #[derive(Debug, Args)]
 pub struct Torque {
-    /// Joint file; - reads standard input
-    file: PathBuf,
+    /// Joint files; - reads standard input
+    #[arg(required = true, value_name = "FILE")]
+    files: Vec<PathBuf>,
     /// Lowest torque, with its unit: "0.5 N·m"
     #[arg(long, value_name = "TORQUE", value_parser = chain::torque)]
     from: Option<f64>,
@@ -45,19 +52,24 @@ pub struct Torque {
     /// Override a field: --set 'plate.box.thickness="6 mm"'
     #[arg(long = "set", value_name = "KEY=VALUE")]
     sets: Vec<String>,
-    /// Print JSON, in SI
+    /// Print one JSON object per file, in SI
     #[arg(long)]
     json: bool,
-    /// Draw the curve to a file that ends in .svg or .png
+    /// Draw the curve of one joint to a file that ends in .svg or .png
     #[arg(long, value_name = "FIGURE")]
+    draw: Option<PathBuf>,
+    #[command(flatten)]
+    batch: Batch,
+    /// Write one JSON per file and one table, torques.csv, to a folder instead of printing
+    #[arg(long, value_name = "DIR", conflicts_with = "json")]
     out: Option<PathBuf>,
-    /// Replace the figure if it exists
+    /// Replace results and figures that exist
     #[arg(long)]
     force: bool,
 }
 
 impl Torque {
-    /// Sweeps the torque; checks the target of the figure before computing.
+    /// Sweeps the torque of every file; checks every target before computing.
     pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
         if let (Some(from), Some(to)) = (self.from, self.to)
             && from >= to
@@ -67,15 +79,42 @@ impl Torque {
                 "swap the two torques",
             ));
         }
-        let figure = match &self.out {
-            Some(path) => Some((
-                output::format(path)?,
-                Target::new(path, Existing::from_force(self.force))?,
-            )),
-            None => None,
+        let existing = Existing::from_force(self.force);
+        let figure = answers::figure(self.draw.as_deref(), &self.files, existing)?;
+        if let Some(folder) = self
+            .out
+            .as_deref()
+            .filter(|path| output::format(path).is_ok())
+        {
+            return Err(Trouble::usage(
+                format!(
+                    "--out names a folder for results, and `{}` a figure",
+                    folder.display()
+                ),
+                "--draw FIGURE draws the curve",
+            ));
+        }
+        let form = Form {
+            json: self.json,
+            table: &csv::TORQUES,
+            out: self.out.as_deref().map(|folder| (folder, existing)),
         };
-        let (_, joint) =
-            check::read(&self.file, &self.sets, console).map_err(|refused| refused.trouble())?;
+        Answers::new(&self.batch, &self.files, &form)?.run(
+            console,
+            &|path, console| check::read(path, &self.sets, console),
+            &|(source, joint), console| {
+                let found = self.found(joint, source)?;
+                if let Some((format, target)) = &figure {
+                    let drawing = Drawing::Torque(Box::new(found.clone()));
+                    target.write(&chain::render(&drawing, *format)?)?;
+                    console.message(&format!("wrote {}\n", target.path.display()));
+                }
+                Ok(Box::new(found))
+            },
+        )
+    }
+
+    fn found(&self, joint: &Joint, source: &Source) -> Result<TorqueSweep, Trouble> {
         let groups = joint.fasteners.len();
         if self.group as usize > groups {
             return Err(Trouble::usage(
@@ -95,23 +134,34 @@ impl Torque {
             chain: self.draws.options(),
         };
         let task = Task {
-            joint: &joint,
+            joint,
             choice: self.field.choice()?,
-            watch: field::watch(),
+            watch: self.batch.watch(),
         };
-        let found = chain::torque_sweep(&task, &options)?;
-        if let Some((format, target)) = figure {
-            target.write(&chain::render(
-                &Drawing::Torque(Box::new(found.clone())),
-                format,
-            )?)?;
-            console.message(&format!("wrote {}\n", target.path.display()));
-        }
-        if self.json {
-            console.json(&json::torque(&found), Layout::Indented)?;
-        } else {
-            console.result(&sweep::torque(&found))?;
-        }
-        Ok(Outcome::Done)
+        // As `check::read` found it, changed in one thing.
+        let folder = &source.folder;
+        let again = |text: &str, sets: &[String]| {
+            let sets = [self.sets.as_slice(), sets].concat();
+            let files = |name: &str| input::table(folder, name);
+            joint::read_with_files(text, &sets, &files).map_err(|told| told.first())
+        };
+        let group = options.group;
+        chain::torque_sweep(&task, &options, &|| {
+            layout::alternatives((joint, group), &source.text, &again)
+        })
+    }
+}
+
+impl Answer for TorqueSweep {
+    fn text(&self) -> String {
+        sweep::torque(self)
+    }
+
+    fn object(&self) -> serde_json::Value {
+        json::torque(self)
+    }
+
+    fn rows(&self) -> Vec<Vec<String>> {
+        csv::torques(self)
     }
 }

@@ -62,6 +62,19 @@ pub struct Trial {
     pub change: String,
     /// The window with it; none where it stays shut.
     pub window: Option<Range>,
+    /// On what it was judged.
+    pub judged: Judged,
+}
+
+/// On what a trial was judged.
+#[derive(Clone, Debug, PartialEq)]
+pub enum Judged {
+    /// The field of the sweep itself.
+    AsSwept,
+    /// The solved field of the changed joint at `fast`.
+    Fast,
+    /// It cannot be built or computed, and why.
+    Refused(String),
 }
 
 /// The torques that heat and strength allow.

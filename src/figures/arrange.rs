@@ -63,10 +63,13 @@ pub(super) fn draw(plot: &ArrangePlot) -> Result<Sheet, FigureError> {
     };
     let mut sheet = Sheet::new(WIDTH);
     let subtitle = format!(
-        "{} against {}, {} case",
+        "{} against {}, {}",
         answer.target.measure.name(),
         cost_title(answer),
-        answer.case
+        match answer.cases.as_slice() {
+            [only] => format!("{only} case"),
+            several => format!("the worst of {}", several.join(" and ")),
+        }
     );
     let top = sheet.header(&answer.title, &subtitle) + 10.0;
     let charted = Charted {
@@ -178,8 +181,8 @@ fn chart(
         }
     }
     let key = [
-        (Sample::Dot(MET), "meets it at every force".to_owned()),
-        (Sample::Dot(NOMINAL), "at the nominal force".to_owned()),
+        (Sample::Dot(MET), "meets it throughout its band".to_owned()),
+        (Sample::Dot(NOMINAL), "at nominal".to_owned()),
         (Sample::Dot(NOT), "does not".to_owned()),
         (Sample::Dot(FAINT), "screened only".to_owned()),
         (Sample::Ring(Stroke::solid(WIDE, ACCENT)), "best".to_owned()),
@@ -200,7 +203,7 @@ const NOT: Colour = Colour(0x9A, 0xA2, 0xA8);
 fn colour(row: &Row) -> Colour {
     match row.verdict {
         Verdict::Met => MET,
-        Verdict::AtNominal => NOMINAL,
+        Verdict::ByForce | Verdict::AtNominal => NOMINAL,
         Verdict::NotMet | Verdict::Failed(_) => NOT,
         Verdict::Screened => FAINT,
     }

@@ -410,6 +410,8 @@ pub struct Filler {
     pub modulus: Option<f64>,
     /// Thickness of a layer in the joint, m; none for what flows and for a table of one's own.
     pub thickness: Option<f64>,
+    /// Density, kg/m³; none where the catalogue has none.
+    pub density: Option<f64>,
 }
 
 impl Filler {

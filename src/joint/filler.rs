@@ -146,6 +146,7 @@ fn one(record: &Record, collector: &mut Collector) -> Option<Option<Filler>> {
         factor: 1.0 + scatter(record, default, collector)?,
         modulus: spring.modulus,
         thickness: spring.thickness,
+        density: known.and_then(|known| Some(known.density.as_ref()?.value)),
     }))
 }
 

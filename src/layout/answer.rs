@@ -1,18 +1,24 @@
 //! The answer of a search: a table of bolts, mass and resistance with its front.
 
 use crate::{
-    joint::Family,
-    layout::{Goal, Layout, Search, Solution, State, Target},
+    estimate,
+    joint::{Family, Joint, Tightening},
+    layout::{
+        Goal, Search, Solution, State, Target,
+        search::{Banded, Found},
+    },
 };
 
 /// Whether a layout meets the requirement.
 #[derive(Clone, Debug, PartialEq)]
 pub enum Verdict {
-    /// At the least, the nominal and the largest force.
+    /// At the unfavourable end of the band, in every case.
     Met,
-    /// At the nominal force alone.
+    /// At the least, the nominal and the largest force, in every case; no band was drawn.
+    ByForce,
+    /// At nominal alone.
     AtNominal,
-    /// Not at the nominal force.
+    /// Not at nominal.
     NotMet,
     /// It was not solved.
     Screened,
@@ -41,6 +47,10 @@ pub struct Row {
     pub screened: f64,
     /// What the elastic field says.
     pub solution: Option<Solution>,
+    /// The case that governs, counted from 0.
+    pub case: usize,
+    /// Low and high of the judged quantity in every case, K/W; none where they were not drawn.
+    pub band: Option<Vec<[f64; 2]>>,
     /// Whether it meets the requirement.
     pub verdict: Verdict,
     /// Whether no other row costs less and conducts better.
@@ -52,7 +62,7 @@ impl Row {
     pub fn value(&self) -> f64 {
         self.solution
             .as_ref()
-            .map_or(self.screened, |solution| solution.nominal)
+            .map_or(self.screened, |solution| solution.cases[self.case].nominal)
     }
 }
 
@@ -61,8 +71,12 @@ impl Row {
 pub struct Answer {
     /// Title of the joint.
     pub title: String,
-    /// The case that was solved.
-    pub case: &'static str,
+    /// The cases, all of which were solved.
+    pub cases: Vec<&'static str>,
+    /// The one that was screened.
+    pub screened_case: &'static str,
+    /// Groups that are not arranged and stay, as people call them.
+    pub fixed: Vec<String>,
     /// What was made small.
     pub goal: Goal,
     /// The judged quantity and its limit.
@@ -85,29 +99,9 @@ impl Answer {
     /// Reads the state of a search.
     pub fn of(search: &Search, state: &State, complete: bool) -> Self {
         let joint = &search.sizes[0].joint;
-        let mut rows: Vec<Row> = search
-            .found(state)
-            .into_iter()
-            .map(|(layout, solution)| row(search, layout, solution))
-            .collect();
-        let cost = |row: &Row| match search.task.goal {
-            Goal::Mass => row.mass,
-            Goal::Bolts | Goal::Resistance => row.places.len() as f64,
-        };
+        let rows = ranked(search, search.all(state));
+        let rows: Vec<Row> = rows.into_iter().map(|(_, row)| row).collect();
         let rank = |row: &Row| search.target.rank(row.value());
-        rows.sort_by(|one, other| {
-            cost(one)
-                .total_cmp(&cost(other))
-                .then(rank(one).total_cmp(&rank(other)))
-        });
-        let mut least = f64::INFINITY;
-        for row in &mut rows {
-            let counts = !matches!(row.verdict, Verdict::Failed(_));
-            row.front = counts && rank(row) < least;
-            if row.front {
-                least = rank(row);
-            }
-        }
         let met = |row: &Row| row.verdict == Verdict::Met;
         let best = match search.task.goal {
             Goal::Bolts | Goal::Mass => rows.iter().position(met),
@@ -117,7 +111,12 @@ impl Answer {
         };
         Self {
             title: joint.title.clone(),
-            case: joint.service.cases[0].name,
+            cases: joint.service.cases.iter().map(|case| case.name).collect(),
+            screened_case: joint.service.cases[search.sizes[0].case].name,
+            fixed: joint.fasteners[1..]
+                .iter()
+                .map(estimate::group_label)
+                .collect(),
             goal: search.task.goal,
             target: search.target,
             heat: joint.service.heat,
@@ -130,40 +129,93 @@ impl Answer {
     }
 }
 
-fn row(search: &Search, layout: Layout, solution: Option<Result<Solution, String>>) -> Row {
-    let size = &search.sizes[layout.size];
-    let verdict = match &solution {
-        None => Verdict::Screened,
-        Some(Err(failure)) => Verdict::Failed(failure.clone()),
-        Some(Ok(solution)) => {
-            let [nominal, ends @ ..] = solution.values().map(|value| search.target.meets(value));
-            match (nominal, ends) {
-                (true, [true, true]) => Verdict::Met,
-                (true, _) => Verdict::AtNominal,
-                (false, _) => Verdict::NotMet,
-            }
-        }
+/// The rows of layouts, cheapest first, with their places among those that were solved; the front is
+/// marked.
+fn ranked(search: &Search, found: Vec<Found>) -> Vec<(usize, Row)> {
+    let mut rows: Vec<(usize, Row)> = found
+        .into_iter()
+        .map(|each| row(search, each))
+        .enumerate()
+        .collect();
+    let cost = |row: &Row| match search.task.goal {
+        Goal::Mass => row.mass,
+        Goal::Bolts | Goal::Resistance => row.places.len() as f64,
     };
+    let rank = |row: &Row| search.target.rank(row.value());
+    rows.sort_by(|(_, one), (_, other)| {
+        cost(one)
+            .total_cmp(&cost(other))
+            .then(rank(one).total_cmp(&rank(other)))
+    });
+    let mut least = f64::INFINITY;
+    for (_, row) in &mut rows {
+        let counts = !matches!(row.verdict, Verdict::Failed(_));
+        row.front = counts && rank(row) < least;
+        if row.front {
+            least = rank(row);
+        }
+    }
+    rows
+}
+
+/// The layouts whose bands are drawn, by their places among the solved ones: the front.
+pub(super) fn marked(search: &Search, state: &State) -> Vec<usize> {
+    let rows = ranked(search, search.without_bands(state)).into_iter();
+    let solved = rows.filter(|(_, row)| row.front && row.solution.is_some());
+    solved.map(|(index, _)| index).collect()
+}
+
+fn row(search: &Search, found: Found) -> Row {
+    let Found {
+        layout,
+        solution,
+        band,
+    } = found;
+    let size = &search.sizes[layout.size];
+    let target = &search.target;
+    let verdict = match (&solution, &band) {
+        (None, _) => Verdict::Screened,
+        (Some(Err(failure)), _) | (_, Some(Err(failure))) => Verdict::Failed(failure.clone()),
+        (Some(Ok(solution)), band) => judged(target, solution, band.as_ref()),
+    };
+    let solution = solution.and_then(Result::ok);
     Row {
         label: size.label(),
         size: size.index,
         torque: match &size.fastener().tightening {
-            crate::joint::Tightening::Torque(tightening) => Some(tightening.torque),
-            crate::joint::Tightening::Preload(_) => None,
+            Tightening::Torque(tightening) => Some(tightening.torque),
+            Tightening::Preload(_) => None,
         },
         family: layout.family,
         refined: layout.refined,
         mass: size.mass * layout.places.len() as f64,
         places: layout.places,
         screened: layout.value,
-        solution: solution.and_then(Result::ok),
+        case: solution
+            .as_ref()
+            .map_or(size.case, |solution| solution.governing(target)),
+        solution,
+        band: band.and_then(Result::ok),
         verdict,
         front: false,
     }
 }
 
+/// The verdict of every case together: at the unfavourable end of the band where one was drawn.
+fn judged(target: &Target, solution: &Solution, band: Option<&Banded>) -> Verdict {
+    let [nominal, by_force] = solution.meets(target);
+    let drawn = band.and_then(|band| band.as_ref().ok());
+    let ends = drawn.map(|cases| cases.iter().flatten().all(|end| target.meets(*end)));
+    match (nominal, ends) {
+        (false, _) => Verdict::NotMet,
+        (true, Some(true)) => Verdict::Met,
+        (true, None) if by_force => Verdict::ByForce,
+        (true, _) => Verdict::AtNominal,
+    }
+}
+
 /// Fields that bend the faces or change the plates, which the screening takes as flat and solid.
-fn passed_over(joint: &crate::joint::Joint) -> Vec<String> {
+fn passed_over(joint: &Joint) -> Vec<String> {
     let mut fields = Vec::new();
     for plate in &joint.plates {
         let stated = [

@@ -59,6 +59,7 @@ pub(super) fn step(joint: &Joint, arrange: &Arrange) -> f64 {
 #[derive(Clone, Debug)]
 pub struct Constraints<'a> {
     joint: &'a Joint,
+    group: usize,
     fastener: &'a Fastener,
     keep_out: &'a [Zone],
     /// Least distance from axis to edge, m.
@@ -70,10 +71,16 @@ pub struct Constraints<'a> {
 impl<'a> Constraints<'a> {
     /// Those of a size.
     pub fn new(size: &'a Size, arrange: &'a Arrange) -> Self {
-        let fastener = size.fastener();
+        Self::of_group((&size.joint, 0), arrange)
+    }
+
+    /// Those of a fastener group of a joint.
+    pub(super) fn of_group((joint, group): (&'a Joint, usize), arrange: &'a Arrange) -> Self {
+        let fastener = &joint.fasteners[group];
         let diameter = fastener.thread.diameter;
         Self {
-            joint: &size.joint,
+            joint,
+            group,
             fastener,
             keep_out: &arrange.keep_out,
             edge_distance: arrange.edge_distance.unwrap_or(EDGE_DISTANCE * diameter),
@@ -142,8 +149,9 @@ impl<'a> Constraints<'a> {
 
     /// The bolts of the other groups, which stay.
     fn others(&self) -> impl Iterator<Item = (&Fastener, [f64; 2])> {
-        let groups = self.joint.fasteners.iter().skip(1);
-        groups.flat_map(|group| group.places.iter().map(move |at| (group, *at)))
+        let groups = self.joint.fasteners.iter().enumerate();
+        let others = groups.filter(|(index, _)| *index != self.group);
+        others.flat_map(|(_, group)| group.places.iter().map(move |at| (group, *at)))
     }
 }
 

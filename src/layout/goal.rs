@@ -4,6 +4,7 @@ use crate::{
     joint::{Joint, Limit, Plane, RequirementKind},
     layout::Failure,
     resistance::Path,
+    uncertainty::Answer,
 };
 
 /// What a search makes small.
@@ -55,6 +56,18 @@ impl Measure {
             Self::NodeToNode => "node to node",
             Self::Added => "added by the joint",
             Self::Contact => "contact only",
+        }
+    }
+
+    /// The same as an answer of the draws.
+    pub(super) const fn answer(self) -> Answer {
+        match self {
+            Self::SourceToSink => Answer::SourceToSink,
+            Self::Hottest => Answer::Hottest,
+            Self::InterfaceDrop => Answer::InterfaceDrop,
+            Self::NodeToNode => Answer::NodeToNode,
+            Self::Added => Answer::AddedByJoint,
+            Self::Contact => Answer::Contact,
         }
     }
 

@@ -24,26 +24,61 @@ fn shown(metres: f64) -> String {
 
 /// The text of a joint file with another first fastener group.
 pub fn rewritten(text: &str, fasten: Fasten) -> Result<String, Failure> {
-    let unreadable = |what: &str| Failure::Rewriting(what.to_owned());
-    let mut document: DocumentMut = text
-        .parse()
-        .map_err(|fault: toml_edit::TomlError| Failure::Rewriting(fault.message().to_owned()))?;
+    let mut document = document(text)?;
     let stated = match fasten.size {
         Some(index) => stated(document.get("arrange"), index)
             .ok_or_else(|| unreadable("arrange.sizes is not a list of tables"))?,
         None => Vec::new(),
     };
-    let group = document
-        .get_mut("fastener")
-        .and_then(first_mut)
-        .ok_or_else(|| unreadable("there is no table of it"))?;
+    let group = group_mut(&mut document, 0)?;
     for (key, value) in stated {
         replace(group, &key, value);
     }
+    stand(group, fasten.places);
+    Ok(document.to_string())
+}
+
+/// The text of a joint file with a group at other places.
+pub(super) fn placed(text: &str, group: usize, at: &[[f64; 2]]) -> Result<String, Failure> {
+    let mut document = document(text)?;
+    stand(group_mut(&mut document, group)?, at);
+    Ok(document.to_string())
+}
+
+/// The text of a joint file with a group of another thread, whose hole and seat are those of the size.
+pub(super) fn threaded(text: &str, group: usize, thread: &str) -> Result<String, Failure> {
+    let mut document = document(text)?;
+    let group = group_mut(&mut document, group)?;
+    replace(group, "thread", thread.into());
+    group.remove("hole");
+    if group.contains_key("head") {
+        group.remove("bearing");
+    }
+    Ok(document.to_string())
+}
+
+fn unreadable(what: &str) -> Failure {
+    Failure::Rewriting(what.to_owned())
+}
+
+fn document(text: &str) -> Result<DocumentMut, Failure> {
+    text.parse()
+        .map_err(|fault: toml_edit::TomlError| unreadable(fault.message()))
+}
+
+/// A fastener group, counted from 0.
+fn group_mut(document: &mut DocumentMut, index: usize) -> Result<&mut dyn TableLike, Failure> {
+    document
+        .get_mut("fastener")
+        .and_then(|item| nth_mut(item, index))
+        .ok_or_else(|| unreadable("there is no table of it"))
+}
+
+/// Puts a group where it shall stand.
+fn stand(group: &mut dyn TableLike, at: &[[f64; 2]]) {
     group.remove("pattern");
     group.remove("count");
-    replace(group, "at", Value::Array(places(fasten.places)));
-    Ok(document.to_string())
+    replace(group, "at", Value::Array(places(at)));
 }
 
 /// What the size of some number states.
@@ -62,14 +97,16 @@ fn stated(arrange: Option<&Item>, index: usize) -> Option<Vec<(String, Value)>> 
     entries.collect()
 }
 
-fn first_mut(item: &mut Item) -> Option<&mut dyn TableLike> {
+fn nth_mut(item: &mut Item, index: usize) -> Option<&mut dyn TableLike> {
     match item {
-        Item::ArrayOfTables(tables) => tables.get_mut(0).map(|table| table as &mut dyn TableLike),
+        Item::ArrayOfTables(tables) => tables
+            .get_mut(index)
+            .map(|table| table as &mut dyn TableLike),
         Item::Value(Value::Array(tables)) => tables
-            .get_mut(0)?
+            .get_mut(index)?
             .as_inline_table_mut()
             .map(|table| table as &mut dyn TableLike),
-        one => one.as_table_like_mut(),
+        one => one.as_table_like_mut().filter(|_| index == 0),
     }
 }
 

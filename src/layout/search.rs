@@ -11,16 +11,17 @@ use std::{
 use rayon::prelude::*;
 
 use crate::{
-    estimate::Choice,
+    estimate::{Choice, Options},
     joint::{Arrange, Family, Joint},
     layout::{
         Constraints, Failure, Goal, Pattern, Sheets, Size, Solution, Target,
+        answer::marked,
         constraints::step,
         free::{self, Unit},
         patterns::{Orbit, orbits, rule_patterns},
         refine::refined,
         sheets::{Influence, Links},
-        solved::solved,
+        solved::{banded, solved},
     },
 };
 
@@ -28,12 +29,15 @@ use crate::{
 const IN_UNIT: usize = 32;
 /// Units between two looks at whether to stop.
 const UNITS: usize = 8;
-/// The same where each unit takes a second.
-const LONG_UNITS: usize = 2;
+/// The same where each unit takes a second: enough that no core waits long for the longest of them.
+const LONG_UNITS: usize = 4;
 /// Layouts that each unit keeps of each family and number of bolts.
 pub(super) const KEPT: usize = 3;
 /// Places whose influence is kept; some tens of kilobytes each.
 const MOST_PLACES: usize = 3000;
+
+/// Draws of the band of a marked layout: its ends move by a percent or two with more.
+const DRAWS: u32 = 256;
 
 /// What is asked.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -91,6 +95,19 @@ pub struct State {
     free: BTreeMap<usize, Vec<Layout>>,
     refined: BTreeMap<usize, Layout>,
     solved: BTreeMap<usize, Result<Solution, String>>,
+    /// Bands of the marked layouts, by their places among the solved ones.
+    banded: BTreeMap<usize, Banded>,
+}
+
+/// Low and high of every case, K/W, or why there is none.
+pub(super) type Banded = Result<Vec<[f64; 2]>, String>;
+
+/// A layout with what was found of it on the elastic field.
+#[derive(Clone, Debug)]
+pub(super) struct Found {
+    pub(super) layout: Layout,
+    pub(super) solution: Option<Result<Solution, String>>,
+    pub(super) band: Option<Banded>,
 }
 
 impl State {
@@ -287,6 +304,20 @@ impl<'a> Search<'a> {
                 )
                 .map_err(|failure| failure.to_string())
             },
+        )?;
+        let marked = marked(self, stage.state);
+        stage.done(
+            ("drawing the bands of the front", [marked.len(), LONG_UNITS]),
+            |state| &mut state.banded,
+            |unit| {
+                let options = Options {
+                    draws: DRAWS,
+                    seed: self.task.seed,
+                };
+                let joint = self.joint(&shortlist[marked[unit]]);
+                banded(&joint, (self.task.choice, self.target.measure), &options)
+                    .map_err(|failure| failure.to_string())
+            },
         )
     }
 
@@ -368,6 +399,32 @@ impl<'a> Search<'a> {
 
     /// What was found so far: solved layouts, and where none is solved yet the best screened ones.
     pub fn found(&self, state: &State) -> Vec<(Layout, Option<Result<Solution, String>>)> {
+        let found = self.all(state).into_iter();
+        found.map(|each| (each.layout, each.solution)).collect()
+    }
+
+    /// The same with the bands that are drawn.
+    pub(super) fn all(&self, state: &State) -> Vec<Found> {
+        let bands: BTreeMap<usize, &Banded> = if state.banded.is_empty() {
+            BTreeMap::new()
+        } else {
+            let marked = marked(self, state);
+            let known = state.banded.iter();
+            known
+                .filter_map(|(unit, band)| Some((*marked.get(*unit)?, band)))
+                .collect()
+        };
+        let mut all = self.without_bands(state);
+        for (index, band) in bands {
+            if let Some(found) = all.get_mut(index) {
+                found.band = Some(band.clone());
+            }
+        }
+        all
+    }
+
+    /// Layouts in the order in which they are solved, with their solutions.
+    pub(super) fn without_bands(&self, state: &State) -> Vec<Found> {
         let chosen = if state.refined.is_empty() {
             self.chosen(state)
         } else {
@@ -375,7 +432,11 @@ impl<'a> Search<'a> {
         };
         let layouts = chosen.into_iter().enumerate();
         layouts
-            .map(|(index, layout)| (layout, state.solved.get(&index).cloned()))
+            .map(|(index, layout)| Found {
+                layout,
+                solution: state.solved.get(&index).cloned(),
+                band: None,
+            })
             .collect()
     }
 }

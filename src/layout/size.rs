@@ -4,7 +4,7 @@ use crate::{
     estimate::{Chain, Choice, Conditions, Fineness, Watch},
     joint::{Fastener, Joint},
     layout::{
-        Failure,
+        Failure, Sheets, Target,
         bolt::{self, Around, Link},
     },
     pressure::{self, Pair},
@@ -20,7 +20,9 @@ pub struct Size {
     pub index: Option<usize>,
     /// The joint with it as its first group.
     pub joint: Joint,
-    /// What heat meets in the first case, all plates as cold as the sink.
+    /// The case that is screened.
+    pub case: usize,
+    /// What heat meets in that case, all plates as cold as the sink.
     pub conditions: Conditions,
     /// Mass of one, kg.
     pub mass: f64,
@@ -29,8 +31,13 @@ pub struct Size {
 }
 
 impl Size {
-    /// Prepares a size from the joint that holds it.
+    /// Prepares a size from the joint that holds it, for its first case.
     pub fn new(index: Option<usize>, joint: Joint) -> Result<Self, Failure> {
+        Self::in_case(index, joint, 0)
+    }
+
+    /// The same for one of its cases.
+    pub fn in_case(index: Option<usize>, joint: Joint, case: usize) -> Result<Self, Failure> {
         let choice = Choice::elastic(Fineness::Fast, MEMORY);
         let chain = Chain::of(&joint, choice, &Watch::none())?;
         let strength = chain.strength(0);
@@ -41,9 +48,10 @@ impl Size {
             );
             format!("{}: {limit}", label(&joint.fasteners[0]))
         });
-        let conditions = chain.cold_conditions(0)?;
+        let conditions = chain.cold_conditions(case)?;
         Ok(Self {
             index,
+            case,
             mass: bolt::mass(&joint, &joint.fasteners[0]),
             conditions,
             overstressed,
@@ -119,6 +127,35 @@ impl Size {
             })
             .fold(0.0, f64::max)
     }
+}
+
+/// The case in which a layout of a joint stands worst by the screening.
+pub fn worst_case(
+    (joint, places): (&Joint, &[[f64; 2]]),
+    target: &Target,
+) -> Result<usize, Failure> {
+    let count = joint.service.cases.len();
+    if count == 1 {
+        return Ok(0);
+    }
+    let ranks = (0..count)
+        .map(|case| {
+            let sizes = [Size::in_case(None, joint.clone(), case)?];
+            let sheets = Sheets::new(&sizes)?;
+            let bolts = sheets.influences(places);
+            let value = sheets.value(
+                &bolts.iter().collect::<Vec<_>>(),
+                &sheets.links(&sizes[0]),
+                target.measure,
+            );
+            Ok(target.rank(value))
+        })
+        .collect::<Result<Vec<f64>, Failure>>()?;
+    // The first of equals.
+    let worst = (0..count).rev();
+    Ok(worst
+        .max_by(|one, other| ranks[*one].total_cmp(&ranks[*other]))
+        .unwrap_or(0))
 }
 
 fn label(fastener: &Fastener) -> String {

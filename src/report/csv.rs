@@ -1,66 +1,104 @@
-//! Estimates as rows of one table, for spreadsheets: SI, unrounded, comma separated (RFC 4180).
+//! Results as rows of one table, for spreadsheets: SI, unrounded, comma separated (RFC 4180).
+
+mod drivers;
+mod torques;
+
+pub use drivers::{DRIVERS, drivers};
+pub use torques::{TORQUES, torques};
 
 use crate::{
     estimate::{Band, CaseResult, Estimate, Met},
     joint::Mass,
 };
 
-/// The columns; values in SI.
-const COLUMNS: [&str; 34] = [
-    "file",
-    "outcome",
-    "message",
-    "title",
-    "field",
-    "resolution",
-    "draws",
-    "case",
-    "contact_K_per_W_low",
-    "contact_K_per_W",
-    "contact_K_per_W_high",
-    "node_to_node_K_per_W_low",
-    "node_to_node_K_per_W",
-    "node_to_node_K_per_W_high",
-    "added_by_joint_K_per_W_low",
-    "added_by_joint_K_per_W",
-    "added_by_joint_K_per_W_high",
-    "source_to_sink_K_per_W_low",
-    "source_to_sink_K_per_W",
-    "source_to_sink_K_per_W_high",
-    "numerical_error",
-    "rise_K_low",
-    "rise_K",
-    "rise_K_high",
-    "hottest_K",
-    "requirement",
-    "bolts",
-    "strength_use",
-    "strength_use_high",
-    "mass_fasteners_kg",
-    "mass_plates_kg",
-    "gap_max_m",
-    "peak_pressure_Pa",
-    "cautions",
-];
+/// A table of many joints; every row begins with file, outcome and message.
+#[derive(Debug)]
+pub struct Table {
+    /// Name of its file without the ending.
+    pub name: &'static str,
+    /// The further columns; values in SI.
+    pub columns: &'static [&'static str],
+}
 
-/// How the work on a file ended.
+/// What every row begins with.
+const FIRST: [&str; 3] = ["file", "outcome", "message"];
+
+impl Table {
+    /// The line that names the columns.
+    pub fn header(&self) -> String {
+        let names = FIRST.iter().chain(self.columns);
+        line(&names.map(|name| (*name).to_owned()).collect::<Vec<_>>())
+    }
+
+    /// The line of a file without an answer.
+    pub fn without(&self, file: &str, ended: Ended, message: &str) -> String {
+        let word = match ended {
+            Ended::Faulty => "faulty",
+            Ended::Failed => "failed",
+        };
+        let mut cells = vec![file.to_owned(), word.to_owned(), message.to_owned()];
+        cells.resize(FIRST.len() + self.columns.len(), String::new());
+        line(&cells)
+    }
+
+    /// Lines of an answer with the file that they belong to.
+    pub fn of_file(&self, file: &str, rows: &[Vec<String>]) -> String {
+        let first = [file.to_owned(), "done".to_owned(), String::new()];
+        rows.iter()
+            .map(|row| line(&[&first, row.as_slice()].concat()))
+            .collect()
+    }
+}
+
+/// One row for every case of every joint.
+pub const ESTIMATES: Table = Table {
+    name: "estimates",
+    columns: &[
+        "title",
+        "field",
+        "resolution",
+        "draws",
+        "case",
+        "contact_K_per_W_low",
+        "contact_K_per_W",
+        "contact_K_per_W_high",
+        "node_to_node_K_per_W_low",
+        "node_to_node_K_per_W",
+        "node_to_node_K_per_W_high",
+        "added_by_joint_K_per_W_low",
+        "added_by_joint_K_per_W",
+        "added_by_joint_K_per_W_high",
+        "source_to_sink_K_per_W_low",
+        "source_to_sink_K_per_W",
+        "source_to_sink_K_per_W_high",
+        "numerical_error",
+        "rise_K_low",
+        "rise_K",
+        "rise_K_high",
+        "hottest_K",
+        "requirement",
+        "bolts",
+        "strength_use",
+        "strength_use_high",
+        "mass_fasteners_kg",
+        "mass_plates_kg",
+        "gap_max_m",
+        "peak_pressure_Pa",
+        "cautions",
+    ],
+};
+
+/// Why a file has no answer.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub enum Ended {
-    /// With an estimate.
-    Done,
     /// The file is at fault.
     Faulty,
     /// The chain gave no number.
     Failed,
 }
 
-/// The line that names the columns.
-pub fn header() -> String {
-    line(&COLUMNS.map(str::to_owned))
-}
-
-/// One line for every case of an estimate.
-pub fn rows(file: &str, estimate: &Estimate, mass: &Mass) -> String {
+/// The cells of every case of an estimate.
+pub fn estimates(estimate: &Estimate, mass: &Mass) -> Vec<Vec<String>> {
     let requirement = estimate.requirement().map(|(_, result)| match result.met {
         Met::Yes => "met",
         Met::Uncertain => "uncertain",
@@ -69,9 +107,6 @@ pub fn rows(file: &str, estimate: &Estimate, mass: &Mass) -> String {
     let codes: Vec<&str> = estimate.cautions.iter().map(|each| each.code).collect();
     let case = |case: &CaseResult| {
         let mut cells = vec![
-            file.to_owned(),
-            "done".to_owned(),
-            String::new(),
             estimate.title.clone(),
             estimate.field.to_owned(),
             estimate.resolution.to_owned(),
@@ -102,21 +137,9 @@ pub fn rows(file: &str, estimate: &Estimate, mass: &Mass) -> String {
         cells.push(number(case.pressure.gap_max));
         cells.push(case.pressure.peak.to_string());
         cells.push(codes.join(" "));
-        line(&cells)
+        cells
     };
     estimate.cases.iter().map(case).collect()
-}
-
-/// The line of a file without an estimate.
-pub fn without(file: &str, ended: Ended, message: &str) -> String {
-    let word = match ended {
-        Ended::Done => "done",
-        Ended::Faulty => "faulty",
-        Ended::Failed => "failed",
-    };
-    let mut cells = vec![file.to_owned(), word.to_owned(), message.to_owned()];
-    cells.resize(COLUMNS.len(), String::new());
-    line(&cells)
 }
 
 fn band(band: Option<&Band>) -> [String; 3] {
@@ -168,10 +191,13 @@ mod tests {
     #[test]
     fn every_line_has_every_column() {
         let count = |line: &str| line.trim_end().split(',').count();
-        assert_eq!(count(&header()), COLUMNS.len());
-        assert_eq!(
-            count(&without("a.toml", Ended::Failed, "no")),
-            COLUMNS.len()
-        );
+        for table in [ESTIMATES, TORQUES, DRIVERS] {
+            let columns = FIRST.len() + table.columns.len();
+            assert_eq!(count(&table.header()), columns);
+            assert_eq!(
+                count(&table.without("a.toml", Ended::Failed, "no")),
+                columns
+            );
+        }
     }
 }

@@ -1,9 +1,9 @@
 //! The torque window, for the terminal: limits as lines of the table, then a plain statement.
 
 use crate::{
-    estimate::{Range, Side, TorqueSweep, TorqueWindow},
+    estimate::{Judged, Range, Side, TorqueSweep, TorqueWindow},
     report::{
-        number::{four, percent, wrapped},
+        number::{four, percent, plain, wrapped},
         text::WIDTH,
     },
     uncertainty::{FIRST, LAST, REQUIREMENT},
@@ -197,20 +197,39 @@ fn shut(window: &TorqueWindow) -> String {
 /// What would open the window: changes tried, then what the limits say of those not tried.
 fn opening(window: &TorqueWindow) -> Vec<String> {
     let mut lines = Vec::new();
-    let opened = |range: &Range| format!("{} N·m", span(range));
-    let shut: Vec<&str> = window
-        .trials
-        .iter()
-        .filter(|trial| trial.window.is_none())
-        .map(|trial| trial.change.as_str())
-        .collect();
     for trial in &window.trials {
         if let Some(range) = &trial.window {
-            lines.push(format!("opened by {}: {}", trial.change, opened(range)));
+            let on = match trial.judged {
+                Judged::Fast => " (solved anew, fast)",
+                Judged::AsSwept | Judged::Refused(_) => "",
+            };
+            lines.push(format!(
+                "opened by {}: {} N·m{on}",
+                trial.change,
+                span(range)
+            ));
         }
     }
-    if !shut.is_empty() {
-        lines.push(format!("tried alone and not enough: {}", shut.join("; ")));
+    let shut = |judged: &Judged| -> Vec<&str> {
+        let alike = window
+            .trials
+            .iter()
+            .filter(|trial| trial.window.is_none() && trial.judged == *judged);
+        alike.map(|trial| trial.change.as_str()).collect()
+    };
+    for (judged, how) in [
+        (Judged::AsSwept, "tried alone and not enough"),
+        (Judged::Fast, "solved anew, fast, and not enough"),
+    ] {
+        let shut = shut(&judged);
+        if !shut.is_empty() {
+            lines.push(format!("{how}: {}", shut.join("; ")));
+        }
+    }
+    for trial in &window.trials {
+        if let Judged::Refused(why) = &trial.judged {
+            lines.push(format!("not possible: {}: {}", trial.change, plain(why)));
+        }
     }
     if let Some(ratio) = window.force_ratio {
         let larger = window
@@ -220,12 +239,12 @@ fn opening(window: &TorqueWindow) -> Vec<String> {
                 format!(" ({name} of the same grade is the next that has it)")
             });
         lines.push(format!(
-            "by the limits, not solved: {ratio:.2} times the force, which takes {ratio:.2} times the stress area{larger} or as many \
+            "by the limits alone: {ratio:.2} times the force, which takes {ratio:.2} times the stress area{larger} or as many \
              times the bolts; a filler asks for less",
         ));
     } else if window.heat.as_ref().is_some_and(Vec::is_empty) && !window.plates_fail {
         lines.push(
-            "not tried: a filler, finer or flatter faces, more bolts, thicker plates; the drivers of `estimate` tell which"
+            "not tried: finer or flatter faces, thicker plates; the drivers of `estimate` tell which"
                 .to_owned(),
         );
     }

@@ -9,7 +9,7 @@ use crate::{
 };
 
 use super::{
-    Answer,
+    Alternative, Answer,
     minimum::minimum,
     window::{Rows, Sought, window},
 };
@@ -48,8 +48,20 @@ pub fn torque_sweep(joint: &Joint, options: &SweepOptions) -> Result<TorqueSweep
     sweep_along(&Chain::new(joint)?, options)
 }
 
+/// Like joints to try where the window is shut; made only then.
+pub type Others<'a> = dyn Fn() -> Vec<Alternative> + 'a;
+
 /// The same for a joint whose chain is prepared.
 pub fn sweep_along(chain: &Chain, options: &SweepOptions) -> Result<TorqueSweep, Failure> {
+    sweep_beside(chain, options, &Vec::new)
+}
+
+/// The same, with like joints that may open a window that is shut.
+pub fn sweep_beside(
+    chain: &Chain,
+    options: &SweepOptions,
+    others: &Others<'_>,
+) -> Result<TorqueSweep, Failure> {
     let joint = chain.joint();
     let group = joint
         .fasteners
@@ -110,6 +122,7 @@ pub fn sweep_along(chain: &Chain, options: &SweepOptions) -> Result<TorqueSweep,
             minimum: minimum.map(|minimum| (minimum.torque, minimum.added_by_joint)),
             trusted,
         },
+        others,
     )?;
     let at = |torque: f64| -> Result<Minimum, Failure> {
         let path = chain

@@ -2,10 +2,91 @@
 
 use crate::{
     catalog,
-    estimate::{End, Failure, Range, Trial},
-    joint::{Bounds, Fastener, Friction, Tightening, TorqueTightening},
+    estimate::{Chain, Choice, End, Failure, Fineness, Judged, Range, Trial, Watch},
+    joint::{Bounds, Fastener, Friction, Joint, Tightening, TorqueTightening},
     uncertainty::window::{FIRST, LAST, Sought, allowed},
 };
+
+/// Memory that the solved field of a changed joint may take, bytes: far more than `fast` needs.
+const MEMORY: u64 = 1_000_000_000;
+/// Torques at which a changed joint is looked at before its window is sought.
+const LOOKS: usize = 3;
+
+/// A like joint that may open a shut window.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Alternative {
+    /// What is changed.
+    pub change: String,
+    /// The joint; why there is none otherwise.
+    pub joint: Result<Joint, String>,
+}
+
+/// Joints otherwise: larger bolts, more of them, a filler; each solved for itself.
+pub(super) fn alternatives(
+    sought: &Sought<'_>,
+    others: Vec<Alternative>,
+) -> Result<Vec<Trial>, Failure> {
+    others
+        .into_iter()
+        .map(|Alternative { change, joint }| {
+            let (window, judged) = match joint {
+                Err(why) => (None, Judged::Refused(why)),
+                Ok(joint) => otherwise(sought, &joint)?,
+            };
+            Ok(Trial {
+                change,
+                window,
+                judged,
+            })
+        })
+        .collect()
+}
+
+/// The window of another joint on the same kind of field, the solved one at its quickest.
+fn otherwise(sought: &Sought<'_>, joint: &Joint) -> Result<(Option<Range>, Judged), Failure> {
+    let group = sought.options.group;
+    let (choice, judged) = if sought.chain.knows_the_gap() {
+        (Choice::elastic(Fineness::Fast, MEMORY), Judged::Fast)
+    } else {
+        (Choice::Cone, Judged::AsSwept)
+    };
+    let refused = |failure: Failure| Ok((None, Judged::Refused(failure.to_string())));
+    let chain = match Chain::of(joint, choice, &Watch::none()) {
+        Ok(chain) => chain,
+        Err(failure) => return refused(failure),
+    };
+    let largest = chain
+        .largest_torque(group)
+        .map_or(0.0, |(torque, _)| torque);
+    let changed = Sought {
+        chain: &chain,
+        // A larger bolt bears torques that the stated one was not swept to.
+        range: [sought.range[0], sought.range[1].max(largest)],
+        ..*sought
+    };
+    let Some(room) = room(&changed) else {
+        return Ok((None, judged));
+    };
+    let ends = [room.low.torque.max(changed.range[0]), room.high.torque];
+    let looks: Vec<f64> = (0..LOOKS)
+        .map(|look| ends[0] + (ends[1] - ends[0]) * look as f64 / (LOOKS - 1) as f64)
+        .collect();
+    // Where the nominal already misses everywhere, no draw is needed.
+    let mut met = false;
+    for torque in &looks {
+        match changed.nominal_excess_at(*torque) {
+            Ok(excess) => met |= excess <= 0.0,
+            Err(failure) => return refused(failure),
+        }
+    }
+    if !met {
+        return Ok((None, judged));
+    }
+    if sought.options.chain.draws > 0 {
+        chain.expect_torques((sought.case, group), ends)?;
+    }
+    Ok((within(&changed, room, &looks)?, judged))
+}
 
 /// Changes of the bolt that leave plates and seats as they are, each tried alone.
 pub(super) fn trials(sought: &Sought<'_>, best: Option<f64>) -> Result<Vec<Trial>, Failure> {
@@ -21,6 +102,7 @@ pub(super) fn trials(sought: &Sought<'_>, best: Option<f64>) -> Result<Vec<Trial
             Ok(Trial {
                 change,
                 window: opened(&changed, best)?,
+                judged: Judged::AsSwept,
             })
         })
         .collect()
@@ -28,11 +110,20 @@ pub(super) fn trials(sought: &Sought<'_>, best: Option<f64>) -> Result<Vec<Trial
 
 /// The window of a changed bolt within the torques swept; none where it stays shut.
 fn opened(sought: &Sought<'_>, best: Option<f64>) -> Result<Option<Range>, Failure> {
-    let group = sought.options.group;
-    let limits = sought.chain.torque_limits(group);
-    let Some(strength) = allowed(sought.chain, group, &limits) else {
+    let Some(room) = room(sought) else {
         return Ok(None);
     };
+    let [low, high] = [room.low, room.high].map(|end| end.torque);
+    let between = best.filter(|best| low < *best && *best < high);
+    let looks: Vec<f64> = [low, high].into_iter().chain(between).collect();
+    within(sought, room, &looks)
+}
+
+/// What strength allows of the torques swept.
+fn room(sought: &Sought<'_>) -> Option<Range> {
+    let group = sought.options.group;
+    let limits = sought.chain.torque_limits(group);
+    let strength = allowed(sought.chain, group, &limits)?;
     let swept = Range {
         low: End {
             torque: sought.range[0],
@@ -43,15 +134,15 @@ fn opened(sought: &Sought<'_>, best: Option<f64>) -> Result<Option<Range>, Failu
             by: LAST,
         },
     };
-    let Some(room) = strength.shared(swept) else {
-        return Ok(None);
-    };
-    let [low, high] = [room.low, room.high].map(|end| end.torque);
-    let between = best.filter(|best| low < *best && *best < high);
-    let mut known = Vec::new();
-    for torque in [low, high].into_iter().chain(between) {
-        known.push((torque, sought.excess_at(torque)?));
-    }
+    strength.shared(swept)
+}
+
+/// The first range in which the heat is met too, looked for from some torques.
+fn within(sought: &Sought<'_>, room: Range, looks: &[f64]) -> Result<Option<Range>, Failure> {
+    let known = looks
+        .iter()
+        .map(|torque| Ok((*torque, sought.excess_at(*torque)?)))
+        .collect::<Result<Vec<(f64, f64)>, Failure>>()?;
     let found = sought.heat(known)?;
     // An end that both share carries the name of the room.
     Ok(found.first().and_then(|range| room.shared(*range)))

@@ -10,7 +10,12 @@ use crate::{
     },
     joint::{Limit, Plane, Requirement, RequirementKind},
     numerics::roots,
-    uncertainty::{Answer, Draws, SweepOptions, draws::draws_between, trials::trials},
+    uncertainty::{
+        Answer, Draws, SweepOptions,
+        draws::draws_between,
+        sweep::Others,
+        trials::{alternatives, trials},
+    },
 };
 
 /// What ends a window where the requirement does.
@@ -70,6 +75,12 @@ impl Sought<'_> {
     /// The chain at a torque.
     fn at(&self, torque: f64) -> Result<Chain<'static>, Failure> {
         self.chain.with_torque(self.options.group, torque)
+    }
+
+    /// The excess at a torque without draws.
+    pub(super) fn nominal_excess_at(&self, torque: f64) -> Result<f64, Failure> {
+        let nominal = self.at(torque)?.nominal_answers(self.case)?;
+        Ok(self.excess(&nominal, None).unwrap_or(f64::NAN))
     }
 
     /// The excess at a torque that was not swept.
@@ -213,7 +224,11 @@ pub(super) struct Rows<'r> {
 }
 
 /// The torque window of a sweep.
-pub(super) fn window(sought: &Sought<'_>, rows: &Rows<'_>) -> Result<TorqueWindow, Failure> {
+pub(super) fn window(
+    sought: &Sought<'_>,
+    rows: &Rows<'_>,
+    others: &Others<'_>,
+) -> Result<TorqueWindow, Failure> {
     let Sought { chain, options, .. } = *sought;
     let limits = chain.torque_limits(options.group);
     let strength = allowed(chain, options.group, &limits);
@@ -245,6 +260,7 @@ pub(super) fn window(sought: &Sought<'_>, rows: &Rows<'_>) -> Result<TorqueWindo
     };
     if window.both.is_none() && window.heat.is_some() && !window.plates_fail {
         window.trials = trials(sought, rows.minimum.map(|(torque, _)| torque))?;
+        window.trials.extend(alternatives(sought, others())?);
     }
     Ok(window)
 }

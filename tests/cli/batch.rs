@@ -151,3 +151,112 @@ fn files_of_one_name_are_not_written_over_each_other() {
         stderr(&told)
     );
 }
+
+#[test]
+fn torques_and_drivers_go_through_many_files_as_estimates_do() {
+    let folder = folder();
+    let more = [
+        ("torque", &["--steps", "3", "--draws", "32"][..], "torques"),
+        ("drivers", &["--draws", "256"], "drivers"),
+    ];
+    for (command, options, table) in more {
+        let run = |more: &[&str]| {
+            within(&folder)
+                .arg(command)
+                .args(FILES)
+                .args(["--field", "cone"])
+                .args(options)
+                .args(more)
+                .assert()
+        };
+        // Text and JSON of many files, in their order, whatever the jobs.
+        let told = |more: &[&str]| stdout(&run(more).code(1));
+        let alone = told(&[]);
+        assert_eq!(told(&["--jobs", "3"]), alone);
+        let at = |name: &str| alone.find(name).expect("the file is named");
+        assert!(at("c.toml:") < at("a.toml:") && at("e.toml:") < at("b.toml:"));
+        let lines: Vec<Value> = told(&["--json", "--jobs", "2"])
+            .lines()
+            .map(|line| serde_json::from_str(line).expect("one object to a line"))
+            .collect();
+        let files: Vec<&Value> = lines.iter().map(|each| &each["file"]).collect();
+        assert_eq!(files, FILES);
+        assert_eq!(lines[2]["ok"], false);
+        // A folder of results with one table.
+        let part = run(&["--out", command, "--jobs", "2"])
+            .code(1)
+            .stdout_eq("");
+        assert!(stderr(&part).contains("d.toml"));
+        let results = folder.path().join(command);
+        let mut all: Vec<String> = ["a", "b", "c", "d", "e"]
+            .map(|name| format!("{name}.json"))
+            .to_vec();
+        all.push(format!("{table}.csv"));
+        all.sort();
+        assert_eq!(names(&results), all);
+        let rows = fs::read_to_string(results.join(format!("{table}.csv"))).expect("it is text");
+        let mut files: Vec<&str> = rows
+            .lines()
+            .skip(1)
+            .filter_map(|line| line.split(',').next())
+            .collect();
+        files.dedup();
+        assert_eq!(files, FILES);
+        // The table says what the object says, to the last digit.
+        let text = fs::read_to_string(results.join("a.json")).expect("it is text");
+        let object: Value = serde_json::from_str(&text).expect("one object");
+        let value = match command {
+            "torque" => &object["largest"]["torque"],
+            _ => &object["inputs"][0]["total"]["value"],
+        };
+        assert!(value.is_number(), "{object}");
+        let row = rows.lines().find(|line| line.starts_with("a.toml"));
+        assert!(
+            row.is_some_and(|row| row.contains(&value.to_string())),
+            "{value} {row:?}"
+        );
+        run(&["--out", command]).code(2).stdout_eq("");
+        run(&["--out", command, "--force", "--shard", "1/5"]).code(0);
+        // One figure shows one joint.
+        let refused = run(&["--draw", "figure.svg"]).code(2).stdout_eq("");
+        assert!(stderr(&refused).contains("one joint"));
+    }
+    let figure = within(&folder)
+        .args(["torque", "a.toml", "--out", "curve.svg"])
+        .assert()
+        .code(2)
+        .stdout_eq("");
+    assert!(stderr(&figure).contains("--draw FIGURE"));
+}
+
+#[test]
+fn the_figures_of_several_joints_go_into_folders_of_their_own() {
+    let folder = folder();
+    let draw = |more: &[&str]| {
+        within(&folder)
+            .args(["draw", "a.toml", "d.toml", "b.toml", "--field", "cone"])
+            .args(more)
+            .assert()
+    };
+    let told = draw(&["--out", "figures", "--jobs", "2"]).code(1);
+    assert!(stderr(&told).contains("d.toml"), "{}", stderr(&told));
+    let figures = folder.path().join("figures");
+    // The file at fault leaves no folder behind.
+    assert_eq!(names(&figures), ["a", "b"]);
+    let all = ["conductance.svg", "cumulative.svg", "pressure.svg"];
+    assert_eq!(names(&figures.join("b")), all);
+    let kept = draw(&["--out", "figures"]).code(2).stdout_eq("");
+    assert!(stderr(&kept).contains("--force replaces it"));
+    draw(&["--out", "figures", "--force"]).code(1);
+    // A part of several keeps to the folders of the whole.
+    draw(&["--out", "part", "--shard", "1/3"]).code(0);
+    assert_eq!(names(&folder.path().join("part")), ["a"]);
+    fs::create_dir(folder.path().join("more")).expect("a folder");
+    let (from, to) = (
+        folder.path().join("a.toml"),
+        folder.path().join("more/A.toml"),
+    );
+    fs::copy(from, to).expect("a copy");
+    let same = draw(&["more/A.toml", "--out", "other"]).code(2);
+    assert!(stderr(&same).contains("would both be written"));
+}

@@ -3,7 +3,7 @@
 use ringsum::{
     figures::{ArrangePlot, Drawing, PlanShape, svg},
     joint::{Family, Limit},
-    layout::{Answer, Goal, Measure, Row, Solution, Target, Verdict},
+    layout::{Answer, Goal, InCase, Measure, Row, Solution, Target, Verdict},
 };
 
 fn row(bolts: usize, nominal: f64, verdict: Verdict) -> Row {
@@ -19,11 +19,15 @@ fn row(bolts: usize, nominal: f64, verdict: Verdict) -> Row {
         mass: 2.8e-3 * bolts as f64,
         screened: 1.05 * nominal,
         solution: Some(Solution {
-            source_to_sink: nominal,
-            nominal,
-            least_force: 1.2 * nominal,
-            largest_force: 0.95 * nominal,
+            cases: vec![InCase {
+                source_to_sink: nominal,
+                nominal,
+                least_force: 1.2 * nominal,
+                largest_force: 0.95 * nominal,
+            }],
         }),
+        case: 0,
+        band: Some(vec![[0.9 * nominal, 1.3 * nominal]]),
         verdict,
         front: true,
     }
@@ -44,7 +48,9 @@ pub fn plot() -> ArrangePlot {
         heads: vec![4e-3; rows.len()],
         answer: Answer {
             title: "Box on panel".into(),
-            case: "hot",
+            cases: vec!["hot"],
+            screened_case: "hot",
+            fixed: Vec::new(),
             goal: Goal::Bolts,
             target: Target {
                 measure: Measure::SourceToSink,

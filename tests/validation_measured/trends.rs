@@ -7,31 +7,7 @@
 
 use crate::{path, read};
 
-const BLOCKS: &str = r#"
-[service]
-medium = "vacuum"
-temperature = "310 K"
-[[plate]]
-name = "upper"
-material = "Al 6061-T6"
-thickness = "50 mm"
-size = ["63.5 mm", "63.5 mm"]
-finish = { roughness = "Rq 1.6 µm" }
-[[plate]]
-name = "lower"
-material = "Al 6061-T6"
-thickness = "50 mm"
-size = ["63.5 mm", "63.5 mm"]
-finish = { roughness = "Rq 1.6 µm" }
-[fastener]
-thread = "M5"
-grade = "8.8"
-head = "socket"
-engagement = { kind = "tapped", length = "16 mm" }
-torque = "5 N·m"
-friction = { nut_factor = 0.2 }
-pattern = { kind = "grid", count = [2, 2], margin = "12 mm" }
-"#;
+const BLOCKS: &str = include_str!("../data/joints/bolted_blocks.toml");
 
 const ONE: &str = "fastener.pattern={ kind = \"grid\", count = [1, 1], first = [\"31.75 mm\", \"31.75 mm\"], pitch = [\"1 mm\", \"1 mm\"] }";
 const EIGHT: &str = "fastener.pattern={ kind = \"edge\", count = [3, 3], margin = \"12 mm\" }";

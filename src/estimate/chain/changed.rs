@@ -43,6 +43,14 @@ impl Chain<'_> {
         self.changed(joint, (held, self.model.clone()), self.error.clone())
     }
 
+    /// Lets go of solved fields that draws no longer need, so that many chains fit into memory; what
+    /// is asked for again is solved again.
+    pub fn forget_fields(&self) {
+        if let Model::Elastic(model) = &self.model {
+            model.forget_fields();
+        }
+    }
+
     /// The same joint with a group tightened or graded otherwise; plates, cells and grid are shared, so
     /// that places, holes and seats must be the same.
     pub(crate) fn with_fastener(

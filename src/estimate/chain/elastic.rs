@@ -52,6 +52,9 @@ pub(super) struct ElasticModel {
     medium: Medium,
     /// What the chain this one comes from has worked out for its draws, case by case.
     parent: Vec<Option<(Medium, Arc<Spread>)>>,
+    /// Temperatures of the plates in the chain this one comes from, case by case: where they hold
+    /// here too, one solution is enough, and its perfect contact is known.
+    warmths: Vec<Option<Warmth>>,
 }
 
 /// What one case is at nominal, and what the draws need.
@@ -93,6 +96,7 @@ impl ElasticModel {
             cases: Vec::new(),
             medium: joint.service.medium.clone(),
             parent: Vec::new(),
+            warmths: Vec::new(),
         })
     }
 
@@ -105,6 +109,7 @@ impl ElasticModel {
             cases: (0..count).map(|_| Arc::new(OnceLock::new())).collect(),
             medium: chain.joint().service.medium.clone(),
             parent: (0..count).map(|case| self.known_spread(case)).collect(),
+            warmths: (0..count).map(|case| self.known_warmth(case)).collect(),
         }
     }
 
@@ -116,6 +121,7 @@ impl ElasticModel {
             cases: Vec::new(),
             medium: self.medium.clone(),
             parent: Vec::new(),
+            warmths: Vec::new(),
         }
     }
 
@@ -126,6 +132,20 @@ impl ElasticModel {
             solver: self.solver.remade(joint, same_contact)?,
             ..self.afresh()
         })
+    }
+
+    /// Lets go of all fields but the nominal ones of the cases.
+    pub(super) fn forget_fields(&self) {
+        self.solver.forget();
+    }
+
+    /// Temperatures of the plates in a case, as far as they are known without a solution.
+    fn known_warmth(&self, case: usize) -> Option<Warmth> {
+        let own = || {
+            let case = self.cases.get(case)?.get()?.as_ref().ok()?;
+            Some(case.warmth.clone())
+        };
+        own().or_else(|| self.warmths.get(case)?.clone())
     }
 
     /// The spread of a case with its medium, where one is known.
@@ -144,7 +164,9 @@ impl ElasticModel {
     fn case(&self, chain: &Chain, index: usize) -> Result<&Case, Failure> {
         self.cases[index]
             .get_or_init(|| {
-                let mut case = self.case_at(chain, (index, chain.cold(index)))?;
+                let start = self.warmths.get(index).cloned().flatten();
+                let start = start.unwrap_or_else(|| chain.cold(index));
+                let mut case = self.case_at(chain, (index, start))?;
                 for _ in 0..MOST_WARMINGS {
                     let Some(warmth) = case.warmed(chain, index) else {
                         break;
@@ -414,8 +436,16 @@ impl ElasticModel {
         // Draws go beyond the nominal forces at both ends.
         let own = chain.force_range(index, forces.iter().sum());
         let drawn = [low.min(1.0) * own[0], high.max(1.0) * own[1]];
-        self.spread_over(chain, index, drawn)?;
-        Ok(())
+        // A sweep looks at one case: bounds of its own cost less than all that the first one would
+        // have to work out before it could lend them.
+        case.spread
+            .get_or_init(|| {
+                self.spread(chain, (index, &case.conditions), (drawn, None))
+                    .map(Arc::new)
+            })
+            .as_ref()
+            .map(|_| ())
+            .map_err(Clone::clone)
     }
 
     /// Share of what the gas takes off the joint's resistance.

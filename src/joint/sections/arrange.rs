@@ -2,8 +2,11 @@
 
 use crate::{
     joint::{
-        fields::{Catalogue, Field, Kind, Measure, Section, field},
-        sections::TORQUE,
+        fields::{Field, Kind, Measure, Section, field},
+        sections::{
+            TORQUE,
+            fasteners::{GRADE, HEAD, NUT_WASHER, THREAD, WASHER},
+        },
     },
     units::Quantity,
 };
@@ -113,31 +116,11 @@ pub static SIZE: Section = Section {
     meaning: "a fastener to try: what it states replaces that of the first fastener group",
     shorthand: None,
     fields: &[
-        field("thread", Kind::Name(Catalogue::Thread), "thread", "\"M4\""),
-        field(
-            "grade",
-            Kind::Name(Catalogue::Grade),
-            "strength grade",
-            "\"A2-70\"",
-        ),
-        field(
-            "head",
-            Kind::Name(Catalogue::Head),
-            "head type or its standard",
-            "\"socket\"",
-        ),
-        field(
-            "washer",
-            Kind::Name(Catalogue::Washer),
-            "washer under the head, by its standard, or \"none\"",
-            "\"ISO 7089\"",
-        ),
-        field(
-            "nut_washer",
-            Kind::Name(Catalogue::Washer),
-            "washer under the nut, by its standard, or \"none\"",
-            "\"ISO 7089\"",
-        ),
+        THREAD,
+        GRADE,
+        HEAD,
+        WASHER,
+        NUT_WASHER,
         field(
             "hole",
             Kind::PerPlate(Measure::Quantity(Quantity::Length)),

@@ -12,45 +12,52 @@ const fn length(key: &'static str, meaning: &'static str, example: &'static str)
     field(key, Kind::Quantity(Quantity::Length), meaning, example).within(1e-5, 100.0)
 }
 
+// What a size of a search may state as well.
+pub(super) const THREAD: Field = field(
+    "thread",
+    Kind::Name(Catalogue::Thread),
+    "thread: ISO metric or unified inch",
+    "\"M4\"",
+);
+pub(super) const GRADE: Field = field(
+    "grade",
+    Kind::Name(Catalogue::Grade),
+    "strength grade",
+    "\"A2-70\"",
+);
+pub(super) const HEAD: Field = field(
+    "head",
+    Kind::Name(Catalogue::Head),
+    "head type: hex, socket, pan, button, countersunk, or its standard",
+    "\"socket\"",
+);
+pub(super) const WASHER: Field = field(
+    "washer",
+    Kind::Name(Catalogue::Washer),
+    "washer under the head, by its standard, or \"none\"",
+    "\"ISO 7089\"",
+);
+pub(super) const NUT_WASHER: Field = field(
+    "nut_washer",
+    Kind::Name(Catalogue::Washer),
+    "washer under the nut, by its standard, or \"none\"",
+    "\"ISO 7089\"",
+);
+
 /// `[[fastener]]`.
 pub static FASTENER: Section = Section {
     name: "fastener",
     meaning: "a group of like bolts",
     shorthand: None,
     fields: &[
-        field(
-            "thread",
-            Kind::Name(Catalogue::Thread),
-            "thread: ISO metric or unified inch",
-            "\"M4\"",
-        )
+        THREAD
         .required(),
-        field(
-            "grade",
-            Kind::Name(Catalogue::Grade),
-            "strength grade",
-            "\"A2-70\"",
-        )
+        GRADE
         .required(),
-        field(
-            "head",
-            Kind::Name(Catalogue::Head),
-            "head type: hex, socket, pan, button, countersunk, or its standard",
-            "\"socket\"",
-        ),
-        field(
-            "washer",
-            Kind::Name(Catalogue::Washer),
-            "washer under the head, by its standard, or \"none\"",
-            "\"ISO 7089\"",
-        )
+        HEAD,
+        WASHER
         .default("none"),
-        field(
-            "nut_washer",
-            Kind::Name(Catalogue::Washer),
-            "washer under the nut, by its standard, or \"none\"",
-            "\"ISO 7089\"",
-        )
+        NUT_WASHER
         .default("none"),
         length(
             "bearing",

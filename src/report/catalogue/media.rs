@@ -107,6 +107,7 @@ pub fn fillers(records: &[FillerRecord]) -> Listing {
                         "thinnest": datum_if(record.thinnest.as_ref()),
                         "modulus": datum_if(record.modulus.as_ref()),
                         "hardness": datum_if(record.hardness.as_ref()),
+                        "density": datum_if(record.density.as_ref()),
                         "points": record.points,
                         "creeps": record.creeps,
                         "silicone": record.silicone,

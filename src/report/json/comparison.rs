@@ -33,6 +33,7 @@ fn joint(joint: &Compared) -> Value {
         "mass": {
             "fasteners": joint.mass.fasteners,
             "plates": joint.mass.plates,
+            "fillers": joint.mass.fillers,
             "total": joint.mass.total(),
             "left_out": joint.mass.left_out,
         },

@@ -1,7 +1,7 @@
 //! The torque window and what a load along the bolts does, as JSON.
 
 use crate::{
-    estimate::{End, Range, Side, TorqueWindow},
+    estimate::{End, Judged, Range, Side, TorqueWindow},
     joint::Bounds,
     preload::Shared,
 };
@@ -19,10 +19,21 @@ pub(super) fn window(window: &TorqueWindow) -> Value {
             },
         })
     });
-    let trials = window
-        .trials
-        .iter()
-        .map(|trial| json!({ "change": trial.change, "window": trial.window.as_ref().map(range) }));
+    let trials = window.trials.iter().map(|trial| {
+        json!({
+            "change": trial.change,
+            "window": trial.window.as_ref().map(range),
+            "judged": match &trial.judged {
+                Judged::AsSwept => "as swept",
+                Judged::Fast => "solved anew, fast",
+                Judged::Refused(_) => "not possible",
+            },
+            "why": match &trial.judged {
+                Judged::Refused(why) => Some(why),
+                Judged::AsSwept | Judged::Fast => None,
+            },
+        })
+    });
     json!({
         "confidence": window.confidence,
         "knee": window.knee,

@@ -178,6 +178,10 @@ impl Solver for Columns {
         Ok(Arc::new(Self { bank }))
     }
 
+    fn forget(&self) {
+        self.bank.forget();
+    }
+
     fn forms(&self, joint: &Joint) -> &'static [Variant] {
         let layered = (0..joint.interfaces()).all(|interface| joint.is_layered(interface));
         if layered { &FORMS[..2] } else { &FORMS }

@@ -129,6 +129,9 @@ pub(super) trait Solver: Debug + Send + Sync {
     /// where it is the same.
     fn remade(&self, joint: &Joint, same_contact: bool) -> Result<Arc<dyn Solver>, Failure>;
 
+    /// Lets go of fields that may be asked for again; they are solved anew then.
+    fn forget(&self) {}
+
     /// What bounds the form of its field.
     fn forms(&self, joint: &Joint) -> &'static [Variant];
 

@@ -93,6 +93,15 @@ impl Bank {
         Ok(bank)
     }
 
+    /// Forgets every field; those in use elsewhere live on there.
+    pub(super) fn forget(&self) {
+        self.solved().clear();
+        self.tables
+            .lock()
+            .unwrap_or_else(PoisonError::into_inner)
+            .clear();
+    }
+
     fn solved(&self) -> MutexGuard<'_, Vec<Solved>> {
         self.solved.lock().unwrap_or_else(PoisonError::into_inner)
     }

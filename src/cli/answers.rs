@@ -1,0 +1,174 @@
+//! One answer for every joint file of a command: told, printed as JSON, or written to a folder.
+
+use crate::{
+    cli::{
+        batch::Batch,
+        check::Refused,
+        console::{Console, Layout, Outcome, Trouble},
+        input::{self, Source},
+        output::{self, Existing, Target},
+        results::Results,
+    },
+    figures::Format,
+    joint::Joint,
+    report::csv::{Ended, Table},
+};
+use std::path::{Path, PathBuf};
+
+/// What a command says of one joint; each form is made where it is asked for alone.
+pub trait Answer {
+    /// For people.
+    fn text(&self) -> String;
+    /// For programs.
+    fn object(&self) -> serde_json::Value;
+    /// The cells of its lines of the table.
+    fn rows(&self) -> Vec<Vec<String>>;
+    /// How it ended.
+    fn outcome(&self) -> Outcome {
+        Outcome::Done
+    }
+}
+
+/// In which form the answers of a command are given.
+pub struct Form<'a> {
+    /// Whether JSON is printed.
+    pub json: bool,
+    /// The table that is written beside the JSON of a folder.
+    pub table: &'static Table,
+    /// The folder for results, and what to do with those that exist.
+    pub out: Option<(&'a Path, Existing)>,
+}
+
+/// The answers of a command, file by file.
+pub struct Answers<'a> {
+    batch: &'a Batch,
+    files: Vec<PathBuf>,
+    given: usize,
+    json: bool,
+    table: &'static Table,
+    out: Option<Results>,
+}
+
+/// How a command reads one joint.
+type Read<'a> = dyn Fn(&Path, &mut Console) -> Result<(Source, Joint), Refused> + Sync + 'a;
+/// What a command finds of one joint.
+type Find<'a> =
+    dyn Fn((&Source, &Joint), &mut Console) -> Result<Box<dyn Answer + 'a>, Trouble> + Sync + 'a;
+
+impl<'a> Answers<'a> {
+    /// Checks every target before anything is computed.
+    pub fn new(batch: &'a Batch, given: &[PathBuf], form: &Form) -> Result<Self, Trouble> {
+        let files = batch.files(given);
+        input::stdin_at_most_once(&files)?;
+        let out = match form.out {
+            Some((folder, existing)) => Some(Results::new(
+                (folder, form.table),
+                &files,
+                (existing, batch.part()),
+            )?),
+            None => None,
+        };
+        Ok(Self {
+            batch,
+            files,
+            given: given.len(),
+            json: form.json,
+            table: form.table,
+            out,
+        })
+    }
+
+    /// Works through the files, also after one at fault.
+    pub fn run(self, console: &mut Console, read: &Read, find: &Find) -> Result<Outcome, Trouble> {
+        let outcome = self
+            .batch
+            .run(&self.files, console, &|index, path, console| {
+                if !self.json && self.out.is_none() && self.given > 1 {
+                    let gap = if index > 0 { "\n" } else { "" };
+                    console.result(&format!("{gap}{}:\n", input::name(path)))?;
+                }
+                self.one((index, path), console, (read, find))
+            })?;
+        if let Some(out) = self.out {
+            console.message(&out.finish()?);
+        }
+        Ok(outcome)
+    }
+
+    fn one(
+        &self,
+        (index, path): (usize, &Path),
+        console: &mut Console,
+        (read, find): (&Read, &Find),
+    ) -> Result<Outcome, Trouble> {
+        let (source, joint) = match read(path, console) {
+            Ok(read) => read,
+            Err(refused) => {
+                let row = self
+                    .table
+                    .without(&input::name(path), Ended::Faulty, &refused.first());
+                self.put(index, (&refused.json(), row), console)?;
+                return Err(refused.trouble());
+            }
+        };
+        let name = &source.name;
+        match find((&source, &joint), console) {
+            Ok(answer) => {
+                if self.json || self.out.is_some() {
+                    let mut object = answer.object();
+                    object["file"] = name.as_str().into();
+                    let rows = match &self.out {
+                        Some(_) => self.table.of_file(name, &answer.rows()),
+                        None => String::new(),
+                    };
+                    self.put(index, (&object, rows), console)?;
+                } else {
+                    console.result(&answer.text())?;
+                }
+                Ok(answer.outcome())
+            }
+            Err(trouble) => {
+                let (message, ended) = match &trouble {
+                    Trouble::Failure(message) => (message.clone(), Ended::Failed),
+                    Trouble::Usage { message, .. } => (message.clone(), Ended::Faulty),
+                    Trouble::Output(_) | Trouble::Faults(_) => return Err(trouble),
+                };
+                let object = serde_json::json!({ "file": name, "ok": false, "failure": message });
+                let row = self.table.without(name, ended, &message);
+                self.put(index, (&object, row), console)?;
+                Err(trouble.of_file(name))
+            }
+        }
+    }
+
+    /// Writes an object where results go to files, prints it where JSON is asked for.
+    fn put(
+        &self,
+        index: usize,
+        (object, rows): (&serde_json::Value, String),
+        console: &mut Console,
+    ) -> Result<(), Trouble> {
+        if let Some(out) = &self.out {
+            out.put(index, object, rows)?;
+        } else if self.json {
+            console.json(object, Layout::of_batch(self.given))?;
+        }
+        Ok(())
+    }
+}
+
+/// A figure of one joint, with its format; of several joints none is drawn.
+pub fn figure(
+    asked: Option<&Path>,
+    files: &[PathBuf],
+    existing: Existing,
+) -> Result<Option<(Format, Target)>, Trouble> {
+    let Some(path) = asked else { return Ok(None) };
+    if files.len() > 1 {
+        return Err(Trouble::usage(
+            format!("--draw draws one joint, and {} are named", files.len()),
+            "draw them one by one, or leave --draw out",
+        ));
+    }
+    Ok(Some((output::format(path)?, Target::new(path, existing)?)))
+}
