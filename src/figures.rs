@@ -8,6 +8,7 @@ mod cumulative;
 mod fit;
 mod flags;
 mod fonts;
+mod joint;
 mod legend;
 mod lettering;
 mod output;
@@ -24,6 +25,7 @@ pub use arrange::ArrangePlot;
 pub use comparison::{ComparisonPlot, ComparisonRow};
 pub use cumulative::{CumulativePlot, Curve, RadiusMark};
 pub use fit::{FitPlot, ProfilePlot};
+pub use joint::{CutBolt, CutEnd, CutHead, JointCut, JointPlot};
 pub use plan::{
     DetailKind, FacePair, PlanBolt, PlanDetail, PlanMap, PlanOutline, PlanPair, PlanShape, Scale,
 };
@@ -44,6 +46,8 @@ pub enum Format {
 /// Everything that can be drawn.
 #[derive(Clone, Debug, PartialEq)]
 pub enum Drawing {
+    /// The joint in plan and cut along a row of bolts.
+    Joint(Box<JointPlot>),
     /// A field over the plan of the joint.
     Plan(Box<PlanMap>),
     /// Pressure and gap over the same plan.
@@ -105,6 +109,7 @@ pub fn png(drawing: &Drawing) -> Result<Vec<u8>, FigureError> {
 
 fn sheet(drawing: &Drawing) -> Result<sheet::Sheet, FigureError> {
     match drawing {
+        Drawing::Joint(plot) => joint::draw(plot),
         Drawing::Plan(map) => plan::draw(map),
         Drawing::PressureAndGap(pair) => plan::draw_pair(pair),
         Drawing::Faces(pair) => plan::draw_faces(pair),

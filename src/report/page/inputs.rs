@@ -1,0 +1,215 @@
+//! Inputs of a page by who stated them: the file, the catalogue with its sources, an assumption.
+
+use crate::{
+    joint::{By, Stated},
+    report::{
+        card, catalogue,
+        listing::{Item, folded},
+        page::{
+            Contents,
+            table::{Table, numbers, words},
+        },
+    },
+};
+
+/// Rows of a list of places that are worth showing, characters.
+const LONGEST: usize = 220;
+
+/// Keys whose values name a record of the catalogue, with the kind of the record.
+const NAMES: [(&str, &str); 13] = [
+    ("material", "materials"),
+    ("finish", "finishes"),
+    ("plating", "platings"),
+    ("thread", "threads"),
+    ("grade", "grades"),
+    ("head", "heads"),
+    ("washer", "heads"),
+    ("nut_washer", "heads"),
+    ("class", "friction"),
+    ("method", "methods"),
+    ("medium", "gases"),
+    ("filler", "fillers"),
+    ("name", "fillers"),
+];
+
+/// The three tables: stated, from the catalogue, assumed. Those without rows are left out.
+pub(super) fn tables(contents: &Contents) -> Vec<Table> {
+    let tables = [
+        stated(contents.stated),
+        taken(contents.stated),
+        assumed(contents),
+    ];
+    tables
+        .into_iter()
+        .filter(|table| !table.rows.is_empty())
+        .collect()
+}
+
+fn stated(all: &[Stated]) -> Table {
+    let overridden = all.iter().any(|each| each.by == By::Override);
+    let mut columns = vec![words("stated"), words("value")];
+    if overridden {
+        columns.push(words("by"));
+    }
+    let mut table = Table::new("", "Stated in the joint file, values as written", columns);
+    let mut group = String::new();
+    for each in all {
+        let (over, key) = match each.path.rsplit_once('.') {
+            Some((over, key)) => (over, key),
+            None => ("", each.path.as_str()),
+        };
+        if matches!(each.path.as_str(), "title" | "format") {
+            continue;
+        }
+        // The first two steps name a thing; deeper ones stay with the key.
+        let over = head(over);
+        let key = if over.is_empty() {
+            each.path.clone()
+        } else {
+            each.path.strip_prefix(over).map_or_else(
+                || key.to_owned(),
+                |rest| rest.trim_start_matches('.').to_owned(),
+            )
+        };
+        if group != over {
+            group = over.to_owned();
+            table.heading(group.clone());
+        }
+        let mut cells = vec![key, shortened(&each.value)];
+        if overridden {
+            cells.push(
+                match each.by {
+                    By::File => "file",
+                    By::Override => "--set or variant",
+                }
+                .to_owned(),
+            );
+        }
+        table.row(cells);
+    }
+    table
+}
+
+/// The table of the file that a path begins with: `plate.base`, `service`, `fastener`.
+fn head(path: &str) -> &str {
+    let steps = if path.starts_with("plate.") { 2 } else { 1 };
+    let ends = path.match_indices('.').map(|(at, _)| at);
+    let end = ends.chain([path.len()]).nth(steps - 1);
+    end.map_or(path, |end| &path[..end])
+}
+
+fn shortened(value: &str) -> String {
+    if value.chars().count() <= LONGEST {
+        return value.to_owned();
+    }
+    let start: String = value.chars().take(LONGEST).collect();
+    format!("{start}…")
+}
+
+/// The records of the catalogue that the file names, each once, value by value.
+fn taken(all: &[Stated]) -> Table {
+    let mut table = Table::new(
+        "",
+        "Taken from the catalogue: status of every value is seen (read in its source), memory, computed or judgement",
+        vec![words("value"), words("taken"), words("status and source")],
+    );
+    let listings = catalogue::listings();
+    let mut told: Vec<(&str, String)> = Vec::new();
+    for each in all {
+        let key = each.path.rsplit('.').next().unwrap_or("");
+        let Some((_, kind)) = NAMES.iter().find(|(name, _)| *name == key) else {
+            continue;
+        };
+        // A plate or a fastener has a name of its own; a filler is named by it.
+        if key == "name" && !each.path.starts_with("filler") {
+            continue;
+        }
+        let listing = listings.iter().find(|listing| listing.kind == *kind);
+        let items = listing.map_or(&[][..], |listing| &listing.items);
+        let Some(item) = items.iter().find(|item| is_called(item, &each.value)) else {
+            continue;
+        };
+        let name = item.cells.first().cloned().unwrap_or_default();
+        if told.contains(&(*kind, name.clone())) {
+            continue;
+        }
+        told.push((*kind, name.clone()));
+        table.heading(format!("{name} ({kind})"));
+        for (label, lines) in card::facts(item) {
+            if label == "name" {
+                continue;
+            }
+            let mut lines = lines.into_iter();
+            let value = lines.next().unwrap_or_default();
+            let origin: Vec<String> = lines.collect();
+            table.row(vec![label.to_owned(), value, origin.join("; ")]);
+        }
+    }
+    table
+}
+
+/// Whether a record answers to a name.
+fn is_called(item: &Item, name: &str) -> bool {
+    let name = folded(name);
+    let own = item.cells.first().map(|cell| folded(cell));
+    own.as_ref() == Some(&name) || item.keywords.split('|').any(|word| folded(word) == name)
+}
+
+fn assumed(contents: &Contents) -> Table {
+    let mut table = Table::new(
+        "",
+        "Assumed, because the file does not state it",
+        vec![words("field"), words("taken"), words("why")],
+    );
+    for each in &contents.estimate.assumptions {
+        table.row(vec![
+            each.field.clone(),
+            each.value.clone(),
+            each.why.clone(),
+        ]);
+    }
+    table
+}
+
+/// The bolts with their places and what they bear, at the first case.
+pub(super) fn bolts(contents: &Contents) -> Table {
+    use crate::report::number::{band, optional, percent};
+    let mut table = Table::new(
+        "",
+        "Bolts: place, clamp force at assembly and in service, share of the yield strength",
+        vec![
+            words("bolt"),
+            numbers("x", "mm"),
+            numbers("y", "mm"),
+            numbers("least", "kN"),
+            numbers("assembly", "kN"),
+            numbers("most", "kN"),
+            numbers("least", "kN"),
+            numbers("service", "kN"),
+            numbers("most", "kN"),
+            numbers("of yield", "nominal"),
+            numbers("of yield", "highest"),
+            numbers("torque at most", "N·m"),
+        ],
+    );
+    let Some(case) = contents.estimate.cases.first() else {
+        return table;
+    };
+    for (index, bolt) in case.bolts.iter().enumerate() {
+        let mut cells = vec![(index + 1).to_string()];
+        cells.extend(bolt.at.map(|at| crate::report::number::brief(at * 1e3)));
+        if bolt.missing {
+            cells.extend(std::iter::repeat_n("–".to_owned(), 9));
+        } else {
+            cells.extend(band(&bolt.force, 1e3));
+            cells.extend(band(&bolt.force_in_service, 1e3));
+            let share = |which: usize| {
+                bolt.strength_use
+                    .map_or_else(|| "–".to_owned(), |each| percent(each[which]))
+            };
+            cells.extend([share(0), share(1), optional(bolt.largest_torque)]);
+        }
+        table.row(cells);
+    }
+    table
+}
