@@ -5,6 +5,7 @@ mod axis;
 mod clip;
 mod comparison;
 mod cumulative;
+mod evidence;
 mod fit;
 mod flags;
 mod fonts;
@@ -24,6 +25,7 @@ mod warmth;
 pub use arrange::ArrangePlot;
 pub use comparison::{ComparisonPlot, ComparisonRow};
 pub use cumulative::{CumulativePlot, Curve, RadiusMark};
+pub use evidence::{EvidenceGroup, EvidencePlot, EvidenceRow};
 pub use fit::{FitPlot, ProfilePlot};
 pub use joint::{CutBolt, CutEnd, CutHead, JointCut, JointPlot};
 pub use plan::{
@@ -70,6 +72,8 @@ pub enum Drawing {
     Fit(Box<FitPlot>),
     /// Likelihood of an unknown over its range.
     Profile(Box<ProfilePlot>),
+    /// Expected against found.
+    Evidence(Box<EvidencePlot>),
 }
 
 /// Why a drawing cannot be made.
@@ -121,6 +125,7 @@ fn sheet(drawing: &Drawing) -> Result<sheet::Sheet, FigureError> {
         Drawing::Tornado(ranking) => tornado::draw(ranking),
         Drawing::Fit(plot) => fit::draw(plot),
         Drawing::Profile(plot) => fit::draw_profile(plot),
+        Drawing::Evidence(plot) => evidence::draw(plot),
     }
 }
 

@@ -15,7 +15,7 @@ use askama::Template;
 use crate::{
     estimate::{CaseResult, Estimate, FieldMap, HeatMap, TorqueSweep},
     joint::{Joint, Stated},
-    report::number::percent,
+    report::number::{brief, percent},
     uncertainty::{Comparison, InMedium, Ranking},
 };
 
@@ -176,6 +176,10 @@ fn block(contents: &Contents, case: Option<&CaseResult>) -> Vec<Entry> {
     let estimate = contents.estimate;
     let entry = |name, value: String| Entry { name, value };
     let digest = contents.source.digest;
+    let heat = estimate.heat.map_or_else(
+        || "not stated".to_owned(),
+        |heat| format!("{} W", brief(heat)),
+    );
     vec![
         entry("joint file", contents.source.name.to_owned()),
         entry(
@@ -198,6 +202,7 @@ fn block(contents: &Contents, case: Option<&CaseResult>) -> Vec<Entry> {
             "numerical error",
             case.map_or_else(|| "–".to_owned(), |case| percent(case.numerical_error)),
         ),
+        entry("heat", heat),
         entry("made by", format!("ringsum {}", env!("CARGO_PKG_VERSION"))),
     ]
 }

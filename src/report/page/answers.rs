@@ -12,7 +12,7 @@ use crate::{
         page::table::{Table, numbers, words},
         window,
     },
-    uncertainty::{Comparison, Ranking},
+    uncertainty::{Comparison, Ranking, Share},
 };
 
 /// The torque window.
@@ -33,27 +33,40 @@ pub(super) struct Torque {
 }
 
 pub(super) fn torque(sweep: &TorqueSweep) -> Torque {
+    // Columns of dashes would tell nothing.
+    let drawn = sweep
+        .points
+        .iter()
+        .any(|point| point.source_to_sink.low.is_some());
+    let mut columns = vec![
+        numbers("torque", "N·m"),
+        numbers("clamp force", "kN"),
+        numbers("source to sink", "K/W"),
+    ];
+    if drawn {
+        columns.extend([numbers("low", "K/W"), numbers("high", "K/W")]);
+    }
+    columns.extend([
+        numbers("added by joint", "K/W"),
+        numbers("contact only", "K/W"),
+        numbers("highest use", "of yield"),
+        words("strength"),
+    ]);
     let mut table = Table::new(
         "torques",
         format!(
             "Resistance against the torque of {}, {} case",
             sweep.group, sweep.case
         ),
-        vec![
-            numbers("torque", "N·m"),
-            numbers("clamp force", "kN"),
-            numbers("low", "K/W"),
-            numbers("source to sink", "K/W"),
-            numbers("high", "K/W"),
-            numbers("added by joint", "K/W"),
-            numbers("contact only", "K/W"),
-            numbers("of yield", "highest"),
-            words("strength"),
-        ],
+        columns,
     );
     for point in &sweep.points {
         let mut cells = vec![four(point.torque), four(point.force.nominal / 1e3)];
-        cells.extend(band(&point.source_to_sink, 1.0));
+        let [low, nominal, high] = band(&point.source_to_sink, 1.0);
+        cells.push(nominal);
+        if drawn {
+            cells.extend([low, high]);
+        }
         cells.push(four(point.added_by_joint.nominal));
         cells.push(four(point.contact.nominal));
         cells.push(
@@ -117,13 +130,15 @@ pub(super) fn drivers(ranking: Option<&Ranking>, drivers: &[Driver]) -> Table {
         let mut table = Table::new(
             "",
             format!(
-                "Inputs by their share in the variance of {}, {} case; known: the band if the input were known to be nominal",
+                "Inputs by their share in the variance of {}, {} case, ± its 95 % interval; if known: the band if the input were known to be nominal; {} of the variance belongs to no input alone",
                 ranking.target.name(),
-                ranking.case
+                ranking.case,
+                percent(ranking.interaction)
             ),
             vec![
                 words("input"),
-                numbers("share", "%"),
+                numbers("share of its own", "%"),
+                numbers("share in total", "%"),
                 numbers("low if known", ranking.target.unit()),
                 numbers("high if known", ranking.target.unit()),
                 words("what to do about it"),
@@ -134,7 +149,8 @@ pub(super) fn drivers(ranking: Option<&Ranking>, drivers: &[Driver]) -> Table {
             if share >= WORTH_A_ROW {
                 table.row(vec![
                     input.input.to_owned(),
-                    format!("{:.1}", 100.0 * share),
+                    interval(&input.index.first),
+                    interval(&input.index.total),
                     optional(input.known.low),
                     optional(input.known.high),
                     input.remedy.clone(),
@@ -160,6 +176,13 @@ pub(super) fn drivers(ranking: Option<&Ranking>, drivers: &[Driver]) -> Table {
         ]);
     }
     table
+}
+
+/// A share in percent with its interval.
+fn interval(share: &Share) -> String {
+    // No minus before a zero.
+    let tenth = |value: f64| (1000.0 * value).round() / 10.0 + 0.0;
+    format!("{:.1} ± {:.1}", tenth(share.value), tenth(share.confidence))
 }
 
 /// The joint and its variants.
@@ -216,8 +239,8 @@ pub(super) struct Told {
     pub(super) class: &'static str,
     /// With its numbers.
     pub(super) text: String,
-    /// What to do.
-    pub(super) remedy: &'static str,
+    /// What to do: pieces of text, each with whether it is something to type.
+    pub(super) remedy: Vec<(bool, &'static str)>,
 }
 
 /// Every caution, grave ones first.
@@ -229,7 +252,7 @@ pub(super) fn cautions(all: &[Caution]) -> Vec<Told> {
             let (weight, class) = match registry::gravity(caution.code) {
                 Gravity::Grave => ("grave", "grave"),
                 Gravity::Range => ("outside a range", "range"),
-                Gravity::Note => ("worth knowing", "note"),
+                Gravity::Note => ("worth knowing", "worth"),
                 Gravity::Standing => ("always", "standing"),
             };
             Told {
@@ -237,7 +260,13 @@ pub(super) fn cautions(all: &[Caution]) -> Vec<Told> {
                 weight,
                 class,
                 text: caution.text,
-                remedy: registry::entry(caution.code).map_or("", |entry| entry.remedy),
+                remedy: registry::entry(caution.code).map_or_else(Vec::new, |entry| {
+                    let pieces = entry.remedy.split('`').enumerate();
+                    pieces
+                        .map(|(index, piece)| (index % 2 == 1, piece))
+                        .filter(|(_, piece)| !piece.is_empty())
+                        .collect()
+                }),
             }
         })
         .collect()

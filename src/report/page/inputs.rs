@@ -32,6 +32,14 @@ const NAMES: [(&str, &str); 13] = [
     ("name", "fillers"),
 ];
 
+/// What a record says that is no value of the joint, or that stands in its heading.
+const PASSED_OVER: [&str; 8] = [
+    "name", "kind", "family", "also", "status", "source", "inch", "series",
+];
+
+/// Words that an origin begins with.
+const STATUSES: [&str; 5] = ["seen", "memory", "computed", "judgement", "user"];
+
 /// The three tables: stated, from the catalogue, assumed. Those without rows are left out.
 pub(super) fn tables(contents: &Contents) -> Vec<Table> {
     let tables = [
@@ -134,15 +142,29 @@ fn taken(all: &[Stated]) -> Table {
             continue;
         }
         told.push((*kind, name.clone()));
-        table.heading(format!("{name} ({kind})"));
-        for (label, lines) in card::facts(item) {
-            if label == "name" {
+        let facts = card::facts(item);
+        let whole = |key: &str| {
+            let fact = facts.iter().find(|(label, _)| *label == key);
+            fact.map(|(_, lines)| lines.join(" "))
+        };
+        // A record that is of one source as a whole tells it once.
+        let origin = match (whole("status"), whole("source")) {
+            (Some(status), Some(source)) => format!(": {status}, {source}"),
+            (Some(only), None) | (None, Some(only)) => format!(": {only}"),
+            (None, None) => String::new(),
+        };
+        table.heading(format!("{name} ({kind}){origin}"));
+        for (label, lines) in facts {
+            if PASSED_OVER.contains(&label) {
                 continue;
             }
-            let mut lines = lines.into_iter();
-            let value = lines.next().unwrap_or_default();
-            let origin: Vec<String> = lines.collect();
-            table.row(vec![label.to_owned(), value, origin.join("; ")]);
+            let [value, origin] = match lines.as_slice() {
+                [value, origin] if STATUSES.iter().any(|word| origin.starts_with(word)) => {
+                    [value.clone(), origin.clone()]
+                }
+                lines => [lines.join("; "), String::new()],
+            };
+            table.row(vec![label.to_owned(), value, origin]);
         }
     }
     table
@@ -181,12 +203,12 @@ pub(super) fn bolts(contents: &Contents) -> Table {
             words("bolt"),
             numbers("x", "mm"),
             numbers("y", "mm"),
-            numbers("least", "kN"),
-            numbers("assembly", "kN"),
-            numbers("most", "kN"),
-            numbers("least", "kN"),
-            numbers("service", "kN"),
-            numbers("most", "kN"),
+            numbers("assembly", "least kN"),
+            numbers("assembly", "nominal kN"),
+            numbers("assembly", "most kN"),
+            numbers("service", "least kN"),
+            numbers("service", "nominal kN"),
+            numbers("service", "most kN"),
             numbers("of yield", "nominal"),
             numbers("of yield", "highest"),
             numbers("torque at most", "N·m"),

@@ -54,10 +54,7 @@ pub(super) fn headline(estimate: &Estimate) -> Headline {
                         "; of heat alone: a limit of strength does not hold, see the cautions",
                     );
                 }
-                let mut letters = told.chars();
-                letters.next().map_or_else(String::new, |first| {
-                    format!("{}{}.", first.to_uppercase(), letters.as_str())
-                })
+                sentence(&told)
             },
         ),
         met: asked.map_or("", |(_, result)| match result.met {
@@ -66,6 +63,14 @@ pub(super) fn headline(estimate: &Estimate) -> Headline {
             Met::Uncertain => "open",
         }),
     }
+}
+
+/// A text as a sentence: a capital before it, a full stop behind.
+fn sentence(text: &str) -> String {
+    let mut letters = text.chars();
+    letters.next().map_or_else(String::new, |first| {
+        format!("{}{}.", first.to_uppercase(), letters.as_str())
+    })
 }
 
 /// One thermal case.
@@ -87,7 +92,8 @@ pub(super) fn cases(estimate: &Estimate) -> Vec<Case> {
     cases
         .map(|case| Case {
             name: case.name,
-            sink: format!("sink surface {:.1} °C", case.sink_temperature - ICE_POINT),
+            sink: format!("sink surface {:.1} °C", case.sink_temperature - ICE_POINT)
+                .replace('-', "−"),
             table: results(case),
             told: told(estimate, case),
         })
@@ -171,7 +177,7 @@ fn told(estimate: &Estimate, case: &CaseResult) -> Vec<String> {
         }
     }
     if let Some(result) = &case.requirement {
-        told.push(format!("{}.", required(result, estimate.draws)));
+        told.push(sentence(&required(result, estimate.draws)));
     }
     if let Some(worst) = case.worst {
         let [least, most] = worst.source_to_sink;

@@ -37,12 +37,15 @@
   const torques = rowsOf("torques");
   if (slider && torques.length > 0) {
     const readout = one("#torque-readout");
+    const heads = all("thead th", document.getElementById("torques")).map((head) => {
+      const unit = one(".unit", head);
+      return [head.firstChild.textContent.trim(), unit ? " " + unit.textContent : ""];
+    });
     const show = () => {
       const row = torques[Number(slider.value)];
-      const [torque, force, low, nominal, high, added, , use, strength] = texts(row);
-      const band = low === "–" ? "" : " (" + low + " to " + high + ")";
-      readout.textContent = torque + " N·m: source to sink " + nominal + " K/W" + band + ", added by joint " + added +
-        " K/W, clamp force " + force + " kN, " + use + " of yield at most, strength " + strength;
+      const parts = texts(row).map((text, at) => heads[at][0] + " " + text + heads[at][1]);
+      readout.textContent = parts.join(", ");
+      slider.setAttribute("aria-valuetext", parts[0]);
       mark(torques, row);
     };
     slider.addEventListener("input", show);
