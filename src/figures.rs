@@ -25,7 +25,7 @@ mod warmth;
 pub use arrange::ArrangePlot;
 pub use comparison::{ComparisonPlot, ComparisonRow};
 pub use cumulative::{CumulativePlot, Curve, RadiusMark};
-pub use evidence::{EvidenceGroup, EvidencePlot, EvidenceRow};
+pub use evidence::{EvidenceAxis, EvidencePanel, EvidencePlot, EvidenceRow};
 pub use fit::{FitPlot, ProfilePlot};
 pub use joint::{CutBolt, CutEnd, CutHead, JointCut, JointPlot};
 pub use plan::{

@@ -9,7 +9,10 @@ use crate::{
     report::{
         comparison::strength,
         number::{band, four, optional, percent},
-        page::table::{Table, numbers, words},
+        page::{
+            results::sentence,
+            table::{Table, numbers, words},
+        },
         window,
     },
     uncertainty::{Comparison, Ranking, Share},
@@ -98,14 +101,22 @@ pub(super) fn torque(sweep: &TorqueSweep) -> Torque {
     let mut told: Vec<String> = window::lines(sweep)
         .iter()
         .enumerate()
-        .map(|(index, line)| {
-            if index == 0 {
-                format!("Window: {line}.")
-            } else {
-                format!("{line}.")
-            }
+        .map(|(index, line)| match index {
+            0 => format!("Window: {line}."),
+            _ => sentence(line),
         })
         .collect();
+    if let Some(both) = &sweep.window.both {
+        let place = if (both.low.torque..=both.high.torque).contains(&sweep.stated) {
+            "lies inside"
+        } else {
+            "lies outside"
+        };
+        told.push(format!(
+            "The stated torque of {} N·m {place}.",
+            four(sweep.stated)
+        ));
+    }
     if let Some(best) = sweep.best {
         told.push(format!(
             "Thermally best torque that strength allows: {} N·m.",

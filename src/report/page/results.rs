@@ -1,6 +1,10 @@
 //! Results of a page: the headline, each case with its planes, media side by side.
 
 use crate::{
+    diagnostic::{
+        Caution,
+        registry::{self, Gravity},
+    },
     estimate::{CaseResult, Estimate, Met},
     report::{
         media::vacuum_over,
@@ -26,6 +30,8 @@ pub(super) struct Headline {
     pub(super) verdict: String,
     /// How it stands: `yes`, `no`, `open` or empty.
     pub(super) met: &'static str,
+    /// Grave cautions by their codes; empty where there is none.
+    pub(super) grave: String,
 }
 
 /// Source to sink at the case that stands worst to the requirement, else at the first.
@@ -57,6 +63,7 @@ pub(super) fn headline(estimate: &Estimate) -> Headline {
                 sentence(&told)
             },
         ),
+        grave: grave(&estimate.cautions),
         met: asked.map_or("", |(_, result)| match result.met {
             Met::Yes => "yes",
             Met::No => "no",
@@ -65,8 +72,24 @@ pub(super) fn headline(estimate: &Estimate) -> Headline {
     }
 }
 
+/// How many cautions are grave, and which.
+fn grave(cautions: &[Caution]) -> String {
+    let mut codes: Vec<&str> = cautions
+        .iter()
+        .map(|caution| caution.code)
+        .filter(|code| registry::gravity(code) == Gravity::Grave)
+        .collect();
+    let count = codes.len();
+    codes.dedup();
+    match count {
+        0 => String::new(),
+        1 => format!("1 grave caution: {}", codes.join(", ")),
+        _ => format!("{count} grave cautions: {}", codes.join(", ")),
+    }
+}
+
 /// A text as a sentence: a capital before it, a full stop behind.
-fn sentence(text: &str) -> String {
+pub(super) fn sentence(text: &str) -> String {
     let mut letters = text.chars();
     letters.next().map_or_else(String::new, |first| {
         format!("{}{}.", first.to_uppercase(), letters.as_str())
