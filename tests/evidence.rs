@@ -6,7 +6,14 @@ use ringsum::figures::{self, Drawing, EvidenceAxis, EvidencePanel, EvidencePlot,
 use serde_json::Value;
 
 /// Parts of the evidence in the order of the drawing.
-const PARTS: [&str; 3] = ["measured.json", "preload.json", "conductance.json"];
+const PARTS: [&str; 6] = [
+    "measured.json",
+    "preload.json",
+    "round.json",
+    "columns_fine.json",
+    "columns_fast.json",
+    "conductance.json",
+];
 
 fn panel(part: &Value) -> EvidencePanel {
     let numbers = |value: &Value| -> Vec<f64> {
@@ -47,7 +54,15 @@ fn the_drawing_holds_what_the_tests_keep() {
         let text = text.unwrap_or_else(|found| panic!("{file}: {found}"));
         serde_json::from_str::<Value>(&text).expect("JSON")
     });
-    let panels: Vec<EvidencePanel> = parts.iter().map(panel).collect();
+    let mut panels: Vec<EvidencePanel> = Vec::new();
+    for part in &parts {
+        let part = panel(part);
+        // Neighbours against the same source share a panel.
+        match panels.last_mut().filter(|last| last.name == part.name) {
+            Some(last) => last.rows.extend(part.rows),
+            None => panels.push(part),
+        }
+    }
     let checks: usize = panels
         .iter()
         .flat_map(|panel| &panel.rows)

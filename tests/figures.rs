@@ -6,6 +6,8 @@ mod arrange;
 mod comparison;
 #[path = "figures/heat.rs"]
 mod heat;
+#[path = "figures/joint.rs"]
+mod joint;
 #[path = "figures/tornado.rs"]
 mod tornado;
 

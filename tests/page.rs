@@ -106,6 +106,8 @@ fn a_page_tells_all_parts_of_the_chain() {
         "law/elastic-contact",
         "law/conduction",
         "seen: ",
+        // The record of the size that the joint has, not the first of its name.
+        "socket M4, socket (heads)",
         "Assumed, because the file does not state it",
         "hot case",
         "cold case",

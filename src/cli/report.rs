@@ -215,24 +215,22 @@ impl Report {
         let found = versions
             .iter()
             .position(|version| version.name.as_ref() == Some(name));
-        match found {
+        if let Some(place) = found {
             // The joint as stated stands before its variants.
-            Some(place) => Ok((Some(place - 1), &versions[place].joint)),
-            None => {
-                let names: Vec<&str> = versions
-                    .iter()
-                    .filter_map(|each| each.name.as_deref())
-                    .collect();
-                Err(Trouble::usage(
-                    format!("`{}` has no variant `{name}`", source.name),
-                    if names.is_empty() {
-                        "it has no variants: add a `[[variant]]` with its name".to_owned()
-                    } else {
-                        format!("its variants are {}", names.join(", "))
-                    },
-                ))
-            }
+            return Ok((place.checked_sub(1), &versions[place].joint));
         }
+        let names: Vec<&str> = versions
+            .iter()
+            .filter_map(|each| each.name.as_deref())
+            .collect();
+        Err(Trouble::usage(
+            format!("`{}` has no variant `{name}`", source.name),
+            if names.is_empty() {
+                "it has no variants: add a `[[variant]]` with its name".to_owned()
+            } else {
+                format!("its variants are {}", names.join(", "))
+            },
+        ))
     }
 
     /// The command that makes a page again.

@@ -83,8 +83,10 @@ pub enum CutEnd {
 const MARGIN: f64 = 20.0;
 /// Largest width and height of the plan, points.
 const WIDEST: [f64; 2] = [560.0, 360.0];
-/// Room beside the cut for what is written of the plates, points.
-const BESIDE: f64 = 170.0;
+/// Least and most room beside the cut for what is written of the plates, points.
+const BESIDE: [f64; 2] = [80.0, 260.0];
+/// What is written of the plates.
+const WRITTEN: Lettering = Lettering::plain(LABEL - 1.0, INK, Anchor::Start);
 /// Height of a head over the diameter of its thread: socket (ISO 4762) and hexagon (ISO 4014), and that
 /// of a nut (ISO 4032), rounded; a drawing shows them, nothing is computed with them.
 const SOCKET: f64 = 1.0;
@@ -111,7 +113,10 @@ pub(super) fn draw(plot: &JointPlot) -> Result<Sheet, FigureError> {
     let along = plot.cut.as_ref().map_or(0.0, |cut| {
         (cut.stack.range[1] - cut.stack.range[0]) * points_per_metre
     });
-    let mut sheet = Sheet::new((left + width.max(along) + BESIDE + MARGIN).max(360.0));
+    let written = plot.cut.iter().flat_map(|cut| &cut.labels);
+    let beside = written.map(|label| WRITTEN.width(label) + 20.0);
+    let beside = beside.fold(BESIDE[0], f64::max).min(BESIDE[1]);
+    let mut sheet = Sheet::new((left + width.max(along) + beside + MARGIN).max(360.0));
     let top = sheet.header(&plot.plan.title, &plot.told) + 14.0;
     let frame = Frame {
         left,
@@ -377,7 +382,6 @@ fn fastener(sheet: &mut Sheet, place: &Place, (bolt, highest): (&CutBolt, f64)) 
 
 /// What each plate is, at the right end of the cut, apart from each other.
 fn labels(sheet: &mut Sheet, place: &Place, cut: &JointCut) {
-    let lettering = Lettering::plain(LABEL - 1.0, INK, Anchor::Start);
     let right = place.x(cut.stack.range[1]);
     let mut free = f64::NEG_INFINITY;
     for (plate, label) in cut.stack.plates.iter().zip(&cut.labels) {
@@ -392,7 +396,7 @@ fn labels(sheet: &mut Sheet, place: &Place, cut: &JointCut) {
         if end.is_finite() {
             sheet.line(&[[end + 2.0, middle], [right + 12.0, y]], FINE);
         }
-        let text = lettering.shortened(label, BESIDE - 18.0);
-        sheet.text([right + 16.0, y + 4.0], text, lettering);
+        let text = WRITTEN.shortened(label, BESIDE[1] - 18.0);
+        sheet.text([right + 16.0, y + 4.0], text, WRITTEN);
     }
 }

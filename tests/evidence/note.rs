@@ -8,9 +8,9 @@ use std::{cell::RefCell, fs, path::PathBuf};
 
 use serde_json::{Value, json};
 
-/// Share of a value by which it may leave what is kept before the drawing is old: platforms differ in
-/// last digits, and a physical change moves more.
-const OLD: f64 = 0.01;
+/// How far a mark may leave what is kept before the drawing is old: a tenth of what is accepted where
+/// deviations are drawn over it, a hundredth of a ratio. Less is not seen in the drawing.
+const OLD: [f64; 2] = [0.1, 0.01];
 
 thread_local! {
     /// Deviation over what is accepted, and the relative deviation, of every check of this thread.
@@ -61,7 +61,15 @@ pub fn keep(file: &str, part: &Value) {
             found.filter_map(Value::as_f64).collect()
         };
         let (kept, found) = (values(kept), values(found));
-        let near = |(one, other): (&f64, &f64)| (one - other).abs() <= OLD * one.abs().max(1.0);
+        let [tenth, hundredth] = OLD;
+        let near = |(one, other): (&f64, &f64)| {
+            let allowed = if part["axis"] == "ratio" {
+                hundredth * one.abs()
+            } else {
+                tenth
+            };
+            (one - other).abs() <= allowed
+        };
         assert!(
             kept.len() == found.len() && kept.iter().zip(&found).all(near),
             "{file} is old: {kept:?} {found:?}; {again}"

@@ -204,26 +204,36 @@ pub(super) fn comparison(found: &Comparison) -> Table {
             first.estimate.field, first.estimate.resolution
         )
     });
+    // Columns of dashes would tell nothing.
+    let drawn = found.joints.iter().any(|joint| joint.estimate.draws > 0);
+    let mut columns = vec![words("version"), numbers("source to sink", "K/W")];
+    if drawn {
+        columns.extend([numbers("low", "K/W"), numbers("high", "K/W")]);
+    }
+    columns.extend([
+        numbers("added by joint", "K/W"),
+        numbers("contact only", "K/W"),
+        numbers("highest use", "of yield"),
+        numbers("bolts", ""),
+        numbers("mass", "kg"),
+        numbers(
+            "best is better",
+            if drawn { "of 100 draws" } else { "nominal" },
+        ),
+    ]);
     let mut table = Table::new(
         "",
         format!("The joint and its variants, each in the case it stands worst in{level}"),
-        vec![
-            words("version"),
-            numbers("low", "K/W"),
-            numbers("source to sink", "K/W"),
-            numbers("high", "K/W"),
-            numbers("added by joint", "K/W"),
-            numbers("contact only", "K/W"),
-            numbers("of yield", "highest"),
-            numbers("bolts", ""),
-            numbers("mass", "kg"),
-            numbers("best is better", "of 100 draws"),
-        ],
+        columns,
     );
     for (index, joint) in found.joints.iter().enumerate() {
         let Some(case) = joint.worst() else { continue };
         let mut cells = vec![joint.name.clone()];
-        cells.extend(band(&case.results.source_to_sink.resistance, 1.0));
+        let [low, nominal, high] = band(&case.results.source_to_sink.resistance, 1.0);
+        cells.push(nominal);
+        if drawn {
+            cells.extend([low, high]);
+        }
         cells.push(four(case.results.added_by_joint.resistance.nominal));
         cells.push(four(case.results.contact.resistance.nominal));
         cells.push(strength(joint).map_or_else(|| "–".to_owned(), percent));

@@ -1,7 +1,8 @@
 //! Inputs of a page by who stated them: the file, the catalogue with its sources, an assumption.
 
 use crate::{
-    joint::{By, Stated},
+    catalog,
+    joint::{By, Joint, Stated},
     report::{
         card, catalogue,
         listing::{Item, folded},
@@ -42,11 +43,7 @@ const STATUSES: [&str; 5] = ["seen", "memory", "computed", "judgement", "user"];
 
 /// The three tables: stated, from the catalogue, assumed. Those without rows are left out.
 pub(super) fn tables(contents: &Contents) -> Vec<Table> {
-    let tables = [
-        stated(contents.stated),
-        taken(contents.stated),
-        assumed(contents),
-    ];
+    let tables = [stated(contents.stated), taken(contents), assumed(contents)];
     tables
         .into_iter()
         .filter(|table| !table.rows.is_empty())
@@ -80,7 +77,7 @@ fn stated(all: &[Stated]) -> Table {
             )
         };
         if group != over {
-            group = over.to_owned();
+            over.clone_into(&mut group);
             table.heading(group.clone());
         }
         let mut cells = vec![key, shortened(&each.value)];
@@ -115,15 +112,14 @@ fn shortened(value: &str) -> String {
 }
 
 /// The records of the catalogue that the file names, each once, value by value.
-fn taken(all: &[Stated]) -> Table {
+fn taken(contents: &Contents) -> Table {
     let mut table = Table::new(
         "",
         "Taken from the catalogue: status of every value is seen (read in its source), memory, computed or judgement",
         vec![words("value"), words("taken"), words("status and source")],
     );
-    let listings = catalogue::listings();
     let mut told: Vec<(&str, String)> = Vec::new();
-    for each in all {
+    for each in contents.stated {
         let key = each.path.rsplit('.').next().unwrap_or("");
         let Some((_, kind)) = NAMES.iter().find(|(name, _)| *name == key) else {
             continue;
@@ -132,12 +128,16 @@ fn taken(all: &[Stated]) -> Table {
         if key == "name" && !each.path.starts_with("filler") {
             continue;
         }
-        let listing = listings.iter().find(|listing| listing.kind == *kind);
-        let items = listing.map_or(&[][..], |listing| &listing.items);
-        let Some(item) = items.iter().find(|item| is_called(item, &each.value)) else {
+        let Some(item) = record(contents.joint, kind, each) else {
             continue;
         };
-        let name = item.cells.first().cloned().unwrap_or_default();
+        let item = &item;
+        let name = match (*kind, item.cells.as_slice()) {
+            // A head or a washer is told with its thread.
+            ("heads", [name, thread, ..]) => format!("{name} {thread}, {}", each.value),
+            (_, [name, ..]) => name.clone(),
+            (_, []) => String::new(),
+        };
         if told.contains(&(*kind, name.clone())) {
             continue;
         }
@@ -168,6 +168,46 @@ fn taken(all: &[Stated]) -> Table {
         }
     }
     table
+}
+
+/// The record that a value names: the joint's own where it keeps it, so that sizes and what the file
+/// itself states are those it was reckoned with.
+fn record(joint: &Joint, kind: &str, stated: &Stated) -> Option<Item> {
+    let group = || {
+        let place = stated.path.split_once('[').and_then(|(_, rest)| {
+            let (number, _) = rest.split_once(']')?;
+            number.parse::<usize>().ok()?.checked_sub(1)
+        });
+        joint.fasteners.get(place.unwrap_or(0))
+    };
+    let mut listing = match kind {
+        "materials" => {
+            let name = folded(&stated.value);
+            let material = joint
+                .plates
+                .iter()
+                .map(|plate| &plate.material)
+                .find(|material| {
+                    let mut names = std::iter::once(&material.name).chain(&material.aliases);
+                    names.any(|each| folded(each) == name)
+                })?;
+            catalogue::materials(std::slice::from_ref(material))
+        }
+        "threads" => catalogue::threads(std::slice::from_ref(&group()?.thread)),
+        "grades" => catalogue::grades(std::slice::from_ref(&group()?.grade)),
+        "heads" => {
+            let seat = catalog::seat(&stated.value, &group()?.thread.name)?;
+            catalogue::heads(std::slice::from_ref(seat))
+        }
+        _ => {
+            let mut all = catalogue::listings();
+            let place = all.iter().position(|listing| listing.kind == kind)?;
+            let mut listing = all.swap_remove(place);
+            listing.items.retain(|item| is_called(item, &stated.value));
+            listing
+        }
+    };
+    (!listing.items.is_empty()).then(|| listing.items.swap_remove(0))
 }
 
 /// Whether a record answers to a name.

@@ -65,6 +65,8 @@ pub(super) fn headline(estimate: &Estimate) -> Headline {
         ),
         grave: grave(&estimate.cautions),
         met: asked.map_or("", |(_, result)| match result.met {
+            // Heat alone is met where strength is not.
+            Met::Yes if estimate.beyond_strength() => "open",
             Met::Yes => "yes",
             Met::No => "no",
             Met::Uncertain => "open",

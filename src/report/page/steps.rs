@@ -3,9 +3,7 @@
 use crate::{
     diagnostic::registry::{self, Entry},
     estimate::{CaseResult, Estimate},
-    joint::{
-        ConeRule, Contact, FillerKind, Friction, Joint, Law, MeasuredKind, Medium, Tightening,
-    },
+    joint::{ConeRule, Contact, FillerKind, Friction, Joint, Law, Medium, Tightening},
     report::number::{four, optional, percent, spread},
 };
 
@@ -165,10 +163,9 @@ fn pressure(joint: &Joint, (estimate, case): (&Estimate, &CaseResult)) -> Step {
 fn conductance(joint: &Joint, case: &CaseResult) -> Step {
     let mut laws = Vec::new();
     let bare = (0..joint.interfaces()).any(|interface| joint.is_bare(interface));
-    match joint.measured.as_ref().map(|measured| &measured.kind) {
-        Some(MeasuredKind::Local { .. } | MeasuredKind::ForceLaw { .. }) => {}
-        None if bare => laws.extend(spots(&joint.contact)),
-        None => {}
+    // Own measurements stand for the laws of bare contact.
+    if bare && joint.measured.is_none() {
+        laws.extend(spots(&joint.contact));
     }
     for filler in joint.every_filler() {
         laws.push(match filler.kind {
