@@ -130,33 +130,46 @@ fn plan_and_cut_are_drawn_with_their_words_and_not_from_nonsense() {
     );
 }
 
-#[test]
-fn evidence_shows_misses_as_such() {
-    let row = |name: &str, found: f64| EvidenceRow {
+/// Plan and cut of a demo joint.
+pub fn drawing() -> Drawing {
+    let stack = stack_outline(&demo("converter_box")).expect("a cut");
+    Drawing::Joint(Box::new(plot(stack)))
+}
+
+/// A check that expects one.
+pub fn check(name: &str, found: f64) -> EvidenceRow {
+    EvidenceRow {
         name: name.to_owned(),
         values: format!("{found} against 1 K/W"),
         accepted: [0.5, 2.0],
         band: Some([0.8 * found, 1.2 * found]),
         found: vec![found],
-    };
-    let plot = |rows: Vec<EvidenceRow>| {
-        Drawing::Evidence(Box::new(EvidencePlot {
-            title: "Evidence".to_owned(),
-            told: "two checks".to_owned(),
-            panels: vec![EvidencePanel {
-                axis: EvidenceAxis::Ratio,
-                name: "measured".to_owned(),
-                rows,
-            }],
-        }))
-    };
-    let both = svg(&plot(vec![row("inside", 1.1), row("outside", 3.0)])).expect("a drawing");
+    }
+}
+
+/// Checks on one axis.
+pub fn evidence(rows: Vec<EvidenceRow>) -> Drawing {
+    Drawing::Evidence(Box::new(EvidencePlot {
+        title: "Evidence".to_owned(),
+        told: "two checks".to_owned(),
+        panels: vec![EvidencePanel {
+            axis: EvidenceAxis::Ratio,
+            name: "measured".to_owned(),
+            rows,
+        }],
+    }))
+}
+
+#[test]
+fn evidence_shows_misses_as_such() {
+    let rows = vec![check("inside", 1.1), check("outside", 3.0)];
+    let both = svg(&evidence(rows)).expect("a drawing");
     assert_eq!(both.matches(", miss").count(), 1);
     assert!(both.contains("3 against 1 K/W, miss") && both.contains("found over expected"));
-    let wrong = svg(&plot(vec![row("nothing", f64::NAN)]));
+    let wrong = svg(&evidence(vec![check("nothing", f64::NAN)]));
     assert_eq!(wrong, Err(FigureError::NotFinite("the evidence")));
     assert_eq!(
-        svg(&plot(Vec::new())),
+        svg(&evidence(Vec::new())),
         Err(FigureError::Empty("the evidence"))
     );
 }
