@@ -49,6 +49,8 @@ pub struct CutBolt {
     pub seat_radius: f64,
     /// Thickness of all washers, m.
     pub washers: f64,
+    /// Heights of the lower and the upper face between which it clamps, m.
+    pub faces: [f64; 2],
     /// Whether the head sits on the first plate.
     pub head_on_top: bool,
     /// The head.
@@ -226,8 +228,17 @@ fn section(
         drawable(value, "the cut")?;
     }
     let highest = stack.plates.first().map_or(0.0, |plate| plate.heights[1]);
-    let above = cut.bolts.iter().map(|bolt| reach(bolt, Reach::Above));
-    let below = cut.bolts.iter().map(|bolt| reach(bolt, Reach::Below));
+    for face in cut.bolts.iter().flat_map(|bolt| bolt.faces) {
+        drawable(face, "the cut")?;
+    }
+    let above = cut
+        .bolts
+        .iter()
+        .map(|bolt| reach(bolt, Reach::Above) + bolt.faces[1] - highest);
+    let below = cut
+        .bolts
+        .iter()
+        .map(|bolt| reach(bolt, Reach::Below) - bolt.faces[0]);
     let above = above.fold(0.0, f64::max) * scale;
     let below = below.fold(0.0, f64::max) * scale;
     let name = Lettering::plain(LABEL, INK, Anchor::Start);
@@ -262,7 +273,7 @@ fn section(
         sheet.line(&[[place.x(*from), y], [place.x(*to), y]], HEATED);
     }
     for bolt in &cut.bolts {
-        fastener(sheet, &place, (bolt, highest));
+        fastener(sheet, &place, bolt);
     }
     labels(sheet, &place, cut);
     Ok(base + below + 6.0)
@@ -326,12 +337,14 @@ fn washer(bolt: &CutBolt) -> [f64; 2] {
 }
 
 /// A bolt: drawn whole, as drawings do not cut bolts.
-fn fastener(sheet: &mut Sheet, place: &Place, (bolt, highest): (&CutBolt, f64)) {
+fn fastener(sheet: &mut Sheet, place: &Place, bolt: &CutBolt) {
     // Heights from the face under the head, outwards positive, whichever way the bolt looks.
-    let (face, sign, depth) = if bolt.head_on_top {
-        (highest, 1.0, highest)
+    let [lower, upper] = bolt.faces;
+    let depth = upper - lower;
+    let (face, sign) = if bolt.head_on_top {
+        (upper, 1.0)
     } else {
-        (0.0, -1.0, highest)
+        (lower, -1.0)
     };
     let d = bolt.diameter;
     let mut block = |half: f64, from: f64, to: f64, fill: Colour| {
@@ -374,8 +387,8 @@ fn fastener(sheet: &mut Sheet, place: &Place, (bolt, highest): (&CutBolt, f64)) 
         let from = -depth - under_nut;
         block(0.5 * HEAD_WIDTH * d, from, from - NUT * d, STEEL);
     }
-    let top = place.y(highest) - reach(bolt, Reach::Above) * place.scale - 5.0;
-    let bottom = place.y(0.0) + reach(bolt, Reach::Below) * place.scale + 5.0;
+    let top = place.y(upper) - reach(bolt, Reach::Above) * place.scale - 5.0;
+    let bottom = place.y(lower) + reach(bolt, Reach::Below) * place.scale + 5.0;
     let x = place.x(bolt.along);
     sheet.line(&[[x, top], [x, bottom]], AXIS);
 }

@@ -34,7 +34,7 @@ pub fn row(name: &str, run: impl FnOnce()) -> Value {
     let found: Vec<f64> = checks.iter().map(|[share, _]| thousandth(*share)).collect();
     json!({
         "name": name,
-        "values": format!("{} values, off by {:.2} % at most", found.len(), 100.0 * largest),
+        "values": format!("{} values within {:.2} %", found.len(), 100.0 * largest),
         "accepted": [-1.0, 1.0],
         "band": null,
         "found": found,

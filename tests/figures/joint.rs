@@ -95,6 +95,7 @@ fn plot(stack: StackOutline) -> JointPlot {
                     diameter: 0.005,
                     seat_radius: bolt.head_radius,
                     washers: 0.002,
+                    faces: [0.0, 0.009],
                     head_on_top: true,
                     head: CutHead::Cylinder,
                     end: CutEnd::Nut { washer: true },

@@ -75,9 +75,10 @@ fn told(joint: &Joint) -> String {
 fn cut(joint: &Joint, stack: StackOutline) -> JointCut {
     let all: Vec<(&Fastener, [f64; 2])> = joint.bolts().collect();
     let bolts = stack.bolts.iter().filter_map(|bolt| {
-        let (group, _) = all.get(bolt.number - 1)?;
+        let (group, at) = all.get(bolt.number - 1)?;
         let there = !joint.missing.contains(&(bolt.number - 1));
-        there.then(|| cut_bolt(joint, group, (bolt.along, &stack.plates)))
+        let faces = faces(joint, (*at, &stack.plates))?;
+        there.then(|| cut_bolt(joint, group, (bolt.along, faces, &stack.plates)))
     });
     JointCut {
         bolts: bolts.collect(),
@@ -97,17 +98,40 @@ fn cut(joint: &Joint, stack: StackOutline) -> JointCut {
     }
 }
 
-fn cut_bolt(joint: &Joint, group: &Fastener, (along, plates): (f64, &[OutlinePlate])) -> CutBolt {
+/// Heights of the outer faces of the stack at a bolt, lower and upper, m: on a rib where it stands on
+/// one.
+fn faces(joint: &Joint, (at, plates): ([f64; 2], &[OutlinePlate])) -> Option<[f64; 2]> {
+    let feet = |plate: &Plate| plate.feet.as_ref().map_or(0.0, |feet| feet.height);
+    let solid = |plate: &Plate| feet(plate) + plate.thickness_at(at);
+    let (warm, cold) = (joint.warm(), joint.cold());
+    Some([
+        plates.last()?.heights[1] - solid(cold),
+        plates.first()?.heights[0] + solid(warm),
+    ])
+}
+
+fn cut_bolt(
+    joint: &Joint,
+    group: &Fastener,
+    (along, faces, plates): (f64, [f64; 2], &[OutlinePlate]),
+) -> CutBolt {
     let far = plates
         .get(joint.far_plate(group))
         .map(|plate| plate.heights);
-    let whole = plates.first().map_or(0.0, |plate| plate.heights[1]);
-    let grip = far.map_or(0.0, |[low, high]| whole - (high - low));
+    // From the face under the head to the faying face of the far plate.
+    let grip = far.map_or(0.0, |[low, high]| {
+        if group.head_plate == 0 {
+            faces[1] - high
+        } else {
+            low - faces[0]
+        }
+    });
     CutBolt {
         along,
         diameter: group.thread.diameter,
         seat_radius: group.head_seat.outer_radius,
         washers: group.washer_thickness,
+        faces,
         head_on_top: group.head_plate == 0,
         head: match (group.conical_seat, group.cylindrical_head) {
             (true, _) => CutHead::Countersunk,
