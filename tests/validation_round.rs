@@ -128,7 +128,7 @@ fn public_cases() {
             assert!(off.abs() < 0.002, "{id} station {station}: {off:+.5}");
         }
         for (share, radius) in &case.r_force {
-            let off = solution.radius_holding(share.parse().unwrap()) - radius;
+            let off = solution.radius_holding(share.parse().expect("a share")) - radius;
             // The same tolerance as the contact radius: both are radii of the same field.
             assert!(off.abs() < allowed, "{id} {share}: {off:+.5}");
         }
