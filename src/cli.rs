@@ -20,6 +20,7 @@ mod input;
 mod list;
 mod new;
 mod output;
+mod report;
 mod results;
 mod torque;
 
@@ -69,6 +70,7 @@ enum Command {
     Drivers(drivers::Drivers),
     Draw(draw::Draw),
     Arrange(arrange::Arrange),
+    Report(Box<report::Report>),
     Fit(Box<fit::Fit>),
     List(list::List),
     Explain(explain::Explain),
@@ -125,6 +127,7 @@ impl Command {
             Self::Drivers(command) => command.run(console),
             Self::Draw(command) => command.run(console),
             Self::Arrange(command) => command.run(console),
+            Self::Report(command) => command.run(console),
             Self::Fit(command) => command.run(console),
             Self::List(command) => command.run(console),
             Self::Explain(command) => command.run(console),

@@ -20,8 +20,8 @@ pub use loss::{Loss, worst_loss};
 pub use maps::{field_map, ring_tables};
 pub use results::*;
 pub use temperatures::{
-    FacePoint, HeatMap, SectionBolt, SectionPlate, Solid, StackSection, Temperatures, Through,
-    heat_map, stack_section,
+    FacePoint, HeatMap, OutlinePlate, SectionBolt, SectionPlate, Solid, StackOutline, StackSection,
+    Temperatures, Through, heat_map, stack_outline, stack_section,
 };
 pub use window::*;
 

@@ -5,9 +5,11 @@ mod axis;
 mod clip;
 mod comparison;
 mod cumulative;
+mod evidence;
 mod fit;
 mod flags;
 mod fonts;
+mod joint;
 mod legend;
 mod lettering;
 mod output;
@@ -23,7 +25,9 @@ mod warmth;
 pub use arrange::ArrangePlot;
 pub use comparison::{ComparisonPlot, ComparisonRow};
 pub use cumulative::{CumulativePlot, Curve, RadiusMark};
+pub use evidence::{EvidenceAxis, EvidencePanel, EvidencePlot, EvidenceRow};
 pub use fit::{FitPlot, ProfilePlot};
+pub use joint::{CutBolt, CutEnd, CutHead, JointCut, JointPlot};
 pub use plan::{
     DetailKind, FacePair, PlanBolt, PlanDetail, PlanMap, PlanOutline, PlanPair, PlanShape, Scale,
 };
@@ -44,6 +48,8 @@ pub enum Format {
 /// Everything that can be drawn.
 #[derive(Clone, Debug, PartialEq)]
 pub enum Drawing {
+    /// The joint in plan and cut along a row of bolts.
+    Joint(Box<JointPlot>),
     /// A field over the plan of the joint.
     Plan(Box<PlanMap>),
     /// Pressure and gap over the same plan.
@@ -66,6 +72,8 @@ pub enum Drawing {
     Fit(Box<FitPlot>),
     /// Likelihood of an unknown over its range.
     Profile(Box<ProfilePlot>),
+    /// Expected against found.
+    Evidence(Box<EvidencePlot>),
 }
 
 /// Why a drawing cannot be made.
@@ -105,6 +113,7 @@ pub fn png(drawing: &Drawing) -> Result<Vec<u8>, FigureError> {
 
 fn sheet(drawing: &Drawing) -> Result<sheet::Sheet, FigureError> {
     match drawing {
+        Drawing::Joint(plot) => joint::draw(plot),
         Drawing::Plan(map) => plan::draw(map),
         Drawing::PressureAndGap(pair) => plan::draw_pair(pair),
         Drawing::Faces(pair) => plan::draw_faces(pair),
@@ -116,6 +125,7 @@ fn sheet(drawing: &Drawing) -> Result<sheet::Sheet, FigureError> {
         Drawing::Tornado(ranking) => tornado::draw(ranking),
         Drawing::Fit(plot) => fit::draw(plot),
         Drawing::Profile(plot) => fit::draw_profile(plot),
+        Drawing::Evidence(plot) => evidence::draw(plot),
     }
 }
 

@@ -43,6 +43,7 @@ mod seats;
 mod service;
 mod stack;
 mod stacking;
+mod stated;
 mod symmetry;
 mod syntax;
 mod tightening;
@@ -73,6 +74,7 @@ pub use mass::Mass;
 pub use missing::NotLeftOut;
 pub use radiation::{RadiatingBack, STEFAN_BOLTZMANN, radiative_film};
 pub use schema::schema;
+pub use stated::{By, Stated, stated};
 pub use versions::{Version, read_version, read_versions, variant_names};
 
 /// Longest joint file, bytes.

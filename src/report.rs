@@ -11,6 +11,7 @@ pub mod json;
 pub mod listing;
 pub mod media;
 pub mod number;
+pub mod page;
 pub mod sweep;
 pub mod table;
 pub mod text;

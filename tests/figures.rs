@@ -6,6 +6,8 @@ mod arrange;
 mod comparison;
 #[path = "figures/heat.rs"]
 mod heat;
+#[path = "figures/joint.rs"]
+mod joint;
 #[path = "figures/tornado.rs"]
 mod tornado;
 
@@ -265,6 +267,11 @@ fn every_drawing() -> Vec<Drawing> {
         Drawing::Section(Box::new(heat::section(Some(22.0)))),
         Drawing::Comparison(Box::new(comparison::comparison())),
         Drawing::Tornado(Box::new(tornado::ranking())),
+        joint::drawing(),
+        joint::evidence(vec![
+            joint::check("inside", 1.1),
+            joint::check("outside", 3.0),
+        ]),
     ]
 }
 
@@ -556,6 +563,19 @@ fn hostile_titles_stay_text() {
             Drawing::Tornado(ranking) => {
                 ranking.title = HOSTILE.repeat(40);
                 ranking.inputs[0].input = HOSTILE;
+            }
+            Drawing::Joint(plot) => {
+                plot.plan.title = HOSTILE.repeat(40);
+                plot.told = HOSTILE.into();
+                if let Some(cut) = &mut plot.cut {
+                    cut.labels[0] = HOSTILE.repeat(9);
+                }
+            }
+            Drawing::Evidence(plot) => {
+                plot.title = HOSTILE.repeat(40);
+                plot.panels[0].name = HOSTILE.repeat(9);
+                plot.panels[0].rows[0].name = HOSTILE.into();
+                plot.panels[0].rows[0].values = HOSTILE.into();
             }
             Drawing::Fit(plot) => plot.title = HOSTILE.repeat(40),
             Drawing::Profile(plot) => plot.answer.title = HOSTILE.repeat(40),

@@ -9,6 +9,8 @@
 mod awkward;
 #[path = "validation_columns/cases.rs"]
 mod cases;
+#[path = "evidence/note.rs"]
+mod evidence;
 #[path = "validation_columns/joints.rs"]
 mod joints;
 #[path = "validation_columns/laws.rs"]

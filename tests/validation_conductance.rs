@@ -1,5 +1,7 @@
 //! Published and independently computed values of contact conductance.
 
+#[path = "evidence/note.rs"]
+mod evidence;
 #[path = "validation_conductance/gap.rs"]
 mod gap;
 
@@ -56,6 +58,7 @@ fn interface(face: &Face) -> Interface {
 }
 
 fn near(found: f64, wanted: f64, relative: f64) {
+    evidence::note(found, wanted, relative);
     assert!(
         (found / wanted - 1.0).abs() <= relative,
         "found {found}, wanted {wanted} within {relative}"
@@ -310,4 +313,25 @@ fn layer_hardness_is_continuous() {
 #[test]
 fn radiation_at_300_kelvin() {
     near(radiation::conductance(300.0, [1.0; 2]), 6.124, 1e-4);
+}
+
+#[test]
+fn evidence_of_the_conductance_is_kept() {
+    evidence::keep(
+        "conductance.json",
+        &serde_json::json!({
+            "axis": "tolerance",
+            "name": "Local conductance: handbooks, textbook problems, own reference values",
+            "rows": [
+                evidence::row("handbook of mechanical engineers, p. 374", faces_combine),
+                evidence::row("textbook problems, printed answers", textbook_problems_with_a_given_contact),
+                evidence::row("stainless pair, own reference", stainless_pair_by_microhardness),
+                evidence::row("aluminium pair by each law, own reference", aluminium_pair_under_each_law),
+                evidence::row("crowned faces, Hertz and own reference", crowned_faces),
+                evidence::row("paste bond lines, Prasher's scaling", paste_bond_lines),
+                evidence::row("gas between an aluminium pair", gap::gas_between_the_aluminium_pair),
+                evidence::row("radiation at 300 K", radiation_at_300_kelvin),
+            ],
+        }),
+    );
 }

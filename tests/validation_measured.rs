@@ -6,6 +6,8 @@
 
 #[path = "validation_measured/contact.rs"]
 mod contact;
+#[path = "evidence/note.rs"]
+mod evidence;
 #[path = "validation_measured/table.rs"]
 mod table;
 #[path = "validation_measured/trends.rs"]

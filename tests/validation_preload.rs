@@ -1,5 +1,8 @@
 //! Preload against printed tables, worked examples and independent forms; each tolerance has its reason.
 
+#[path = "evidence/note.rs"]
+mod evidence;
+
 use std::{f64::consts::PI, fs};
 
 use ringsum::{
@@ -65,6 +68,7 @@ fn rows<'a>(table: &'a toml::Table, key: &str) -> &'a [toml::Value] {
 #[track_caller]
 fn assert_close(found: f64, printed: f64, tolerance: f64, what: &str) {
     let error = found / printed - 1.0;
+    evidence::note(found, printed, tolerance);
     assert!(
         error.abs() <= tolerance,
         "{what}: {found} against {printed}, {:.3} %, allowed {:.3} %",
@@ -360,4 +364,23 @@ fn tightening_factor_and_scatter_agree() {
     let (most, _) = table_entry(&table, "M12", (0.14, 640e6), TorsionRule::Plastic);
     assert_close(most * 1e-3, 41.9, 0.005, "largest preload");
     assert_close(most * 1e-3 / 1.8, 23.3, 0.005, "smallest preload");
+}
+
+#[test]
+fn evidence_of_the_preload_is_kept() {
+    evidence::keep(
+        "preload.json",
+        &serde_json::json!({
+            "axis": "tolerance",
+            "name": "Torque and clamp force: printed tables and sheets",
+            "rows": [
+                evidence::row("VDI 2230-1:2001, fine threads", fine_thread_table_of_vdi_2230_2001),
+                evidence::row("VDI 2230-1:2001, stainless", stainless_table_of_vdi_2230_2001),
+                evidence::row("class 8.8 coarse, friction 0.12", coarse_torques_of_class_8_8_at_friction_0_12),
+                evidence::row("older edition, elastic torsion", old_edition_preloads_follow_k_2),
+                evidence::row("worked sheet of an M16", worked_sheet_of_an_m16),
+                evidence::row("proof loads, ISO 898", proof_loads_of_iso_898),
+            ],
+        }),
+    );
 }

@@ -1,6 +1,9 @@
 //! The one place where commands meet the chain: reading a joint, estimating it, drawing it.
 
+mod page;
+
 pub use crate::estimate::{Choice, Fineness, Watch};
+pub use page::{Asked, Effort, Handed, handed};
 
 use crate::{
     cli::console::Trouble,

@@ -161,7 +161,10 @@ impl Compare {
 }
 
 /// The joint of a file and its variants, each with its name.
-fn versions_of(file: Option<&str>, versions: Vec<Version>) -> impl Iterator<Item = Entry> {
+pub(super) fn versions_of(
+    file: Option<&str>,
+    versions: Vec<Version>,
+) -> impl Iterator<Item = Entry> {
     let alone = versions.len() == 1;
     versions.into_iter().map(move |version| {
         let own = match (&version.name, alone) {
@@ -180,7 +183,8 @@ fn versions_of(file: Option<&str>, versions: Vec<Version>) -> impl Iterator<Item
     })
 }
 
-fn plot(entries: &[Entry], (found, maps): (&Comparison, &[FieldMap])) -> ComparisonPlot {
+/// Versions side by side, with their pressures.
+pub(super) fn plot(entries: &[Entry], (found, maps): (&Comparison, &[FieldMap])) -> ComparisonPlot {
     let rows = found
         .joints
         .iter()

@@ -1,5 +1,9 @@
 //! What the figures show of a joint, gathered from the joint and its results.
 
+mod joint;
+
+pub use joint::plan_and_cut;
+
 use crate::{
     cli::chain::Fields,
     estimate::{Estimate, FieldMap, RingRow},
@@ -101,6 +105,29 @@ pub fn pressure(joint: &Joint, nominal: &Estimate, field: &FieldMap) -> PlanMap 
         joint,
         (nominal, field),
     )
+}
+
+/// What a figure shows, in a sentence, and whether its pictures are maps over the plan.
+pub fn told(name: &str) -> (&'static str, bool) {
+    match name {
+        PRESSURE => ("Contact pressure between the faces.", true),
+        PRESSURE_AND_GAP => (
+            "Contact pressure, and the gap between the faces where nothing presses.",
+            true,
+        ),
+        CONDUCTANCE => ("Local conductance between the faces.", true),
+        FLUX => ("Heat flux between the faces over its mean.", true),
+        TEMPERATURE => ("Temperatures of both faces on one scale.", true),
+        SECTION => (
+            "Temperatures on a cut through the stack, and through its thickness at two places.",
+            false,
+        ),
+        CUMULATIVE => (
+            "Conductance gathered from the hole of a bolt outwards.",
+            false,
+        ),
+        _ => ("A figure of the joint.", false),
+    }
 }
 
 /// The title of the joint; of a stack with the interface that is drawn.

@@ -4,15 +4,29 @@ use clap::Args;
 
 use crate::estimate::Options;
 
+/// Draws unless told otherwise.
+const DRAWS: u32 = 1024;
+/// Seed unless told otherwise.
+const SEED: u64 = 1;
+
 /// How the low and the high are found.
 #[derive(Clone, Copy, Debug, Args)]
 pub struct Draws {
     /// Joints drawn for low and high, up to 1e7; 0 gives the nominal alone
-    #[arg(long, value_name = "N", default_value = "1024", value_parser = draws)]
+    #[arg(long, value_name = "N", default_value_t = DRAWS, value_parser = draws)]
     pub draws: u32,
     /// Seed of the draws
-    #[arg(long, value_name = "N", default_value_t = 1)]
+    #[arg(long, value_name = "N", default_value_t = SEED)]
     pub seed: u64,
+}
+
+impl Default for Draws {
+    fn default() -> Self {
+        Self {
+            draws: DRAWS,
+            seed: SEED,
+        }
+    }
 }
 
 impl Draws {

@@ -49,6 +49,23 @@ enum Level {
 }
 
 impl Field {
+    /// The same as arguments; nothing where all is as usual.
+    pub fn words(self) -> Vec<String> {
+        let mut words = Vec::new();
+        if self.kind == Kind::Cone {
+            words.extend(["--field".to_owned(), "cone".to_owned()]);
+        }
+        let level = self.resolution.and_then(|level| level.to_possible_value());
+        if let Some(level) = level {
+            words.extend(["--resolution".to_owned(), level.get_name().to_owned()]);
+        }
+        if let Some(memory) = self.memory {
+            let megabytes = memory.div_ceil(1_000_000);
+            words.extend(["--memory".to_owned(), format!("{megabytes} MB")]);
+        }
+        words
+    }
+
     /// The same for the chain; what belongs to the elastic field alone is refused beside the cone.
     pub fn choice(self) -> Result<Choice, Trouble> {
         match self.kind {

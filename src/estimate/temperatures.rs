@@ -2,7 +2,10 @@
 
 mod section;
 
-pub use section::{SectionBolt, SectionPlate, Solid, StackSection, Through, stack_section};
+pub use section::{
+    OutlinePlate, SectionBolt, SectionPlate, Solid, StackOutline, StackSection, Through,
+    stack_outline, stack_section,
+};
 
 use crate::estimate::{Chain, Failure, maps::window};
 

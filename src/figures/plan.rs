@@ -18,7 +18,7 @@ mod bolts;
 mod contour;
 mod faces;
 mod pair;
-mod parts;
+pub(super) mod parts;
 mod raster;
 mod shapes;
 pub(super) mod small;
@@ -135,16 +135,16 @@ impl PlanMap {
 }
 
 /// The window on the sheet.
-struct View {
-    frame: Frame,
-    window: [f64; 4],
-    points_per_metre: f64,
+pub(super) struct View {
+    pub(super) frame: Frame,
+    pub(super) window: [f64; 4],
+    pub(super) points_per_metre: f64,
     /// Colour where the field has no value; paper when none.
-    ground: Option<Colour>,
+    pub(super) ground: Option<Colour>,
 }
 
 impl View {
-    fn point(&self, [x, y]: [f64; 2]) -> [f64; 2] {
+    pub(super) fn point(&self, [x, y]: [f64; 2]) -> [f64; 2] {
         [
             self.frame.left + (x - self.window[0]) * self.points_per_metre,
             self.frame.bottom - (y - self.window[1]) * self.points_per_metre,
@@ -213,7 +213,7 @@ pub(super) fn draw(map: &PlanMap) -> Result<Sheet, FigureError> {
 }
 
 /// Width and height of a window that can be drawn, m.
-fn extent(window: [f64; 4]) -> Result<[f64; 2], FigureError> {
+pub(super) fn extent(window: [f64; 4]) -> Result<[f64; 2], FigureError> {
     for edge in window {
         drawable(edge, "the window")?;
     }

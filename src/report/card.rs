@@ -164,15 +164,21 @@ const FIELDS: &[(&str, &str, Form)] = &[
     ("source", "source", Form::Plain),
 ];
 
-/// Everything known about a record, a line to each value it has.
-pub fn card(item: &Item) -> String {
-    let rows: Vec<(&str, Vec<String>)> = FIELDS
+/// Everything known about a record: each value's label with its lines, the last of which tells the
+/// origin of the value where the record has one for each.
+pub(super) fn facts(item: &Item) -> Vec<(&'static str, Vec<String>)> {
+    FIELDS
         .iter()
         .filter_map(|(key, label, form)| {
             let lines = lines(item.record.get(key)?, *form);
             (!lines.is_empty()).then_some((*label, lines))
         })
-        .collect();
+        .collect()
+}
+
+/// Everything known about a record, a line to each value it has.
+pub fn card(item: &Item) -> String {
+    let rows = facts(item);
     let width = |label: &str| label.chars().count();
     let margin = 2 + rows
         .iter()

@@ -19,7 +19,7 @@ mod axial;
 mod pressure;
 mod rings;
 mod temperatures;
-mod thermal;
+pub(super) mod thermal;
 
 pub use rings::{ring_sum, rings};
 

@@ -83,8 +83,8 @@ pub(super) fn interleaved(table: &str, torques: &[f64], marks: &[Mark]) -> Strin
     text
 }
 
-/// The plain statement: the window, or none with what would open it.
-pub(super) fn statement(sweep: &TorqueSweep) -> String {
+/// The plain statement, line by line: the window, or none with what would open it.
+pub(super) fn lines(sweep: &TorqueSweep) -> Vec<String> {
     let window = &sweep.window;
     let mut lines = vec![first(window)];
     if window.both.is_none() {
@@ -101,8 +101,13 @@ pub(super) fn statement(sweep: &TorqueSweep) -> String {
             four(knee)
         ));
     }
+    lines
+}
+
+/// The same behind its label.
+pub(super) fn statement(sweep: &TorqueSweep) -> String {
     let mut text = String::new();
-    for (index, line) in lines.iter().enumerate() {
+    for (index, line) in lines(sweep).iter().enumerate() {
         let label = if index == 0 { "window   " } else { "         " };
         let body = wrapped(line, WIDTH - label.len(), 0);
         let body = body.replace('\n', &format!("\n{}", " ".repeat(label.len())));

@@ -104,7 +104,7 @@ fn aluminium_gap() -> Gap {
 // 0.1 % as stated. Computed for this project; the integral is from memory, k/(Y + M) in Mechanical
 // Engineers' Handbook, 3rd ed., vol. 4. The corrected law is what the program uses: 2 %.
 #[test]
-fn gas_between_the_aluminium_pair() {
+pub(super) fn gas_between_the_aluminium_pair() {
     let gap = aluminium_gap();
     near(gap.separation, 3.5429e-6, 1e-4);
     for (name, accommodation, integral, simple) in [

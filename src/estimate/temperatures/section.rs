@@ -1,12 +1,15 @@
 //! A section through the stack along a row of bolts, and what lies on it.
 
 mod line;
+mod outline;
 
 use crate::{
     estimate::{Chain, Failure, Realisation},
     joint::{Joint, Plate},
     resistance::columns::{Across, Section},
 };
+
+pub use outline::{OutlinePlate, StackOutline, stack_outline};
 
 use line::{chords, heated, places, point, row};
 
@@ -169,7 +172,6 @@ pub fn stack_section(chain: &Chain) -> Result<Option<StackSection>, Failure> {
         return Ok(None);
     };
     let state = chain.state(0, &Realisation::default())?;
-    let count = sections.len();
     let plates: Vec<SectionPlate> = joint
         .plates
         .iter()
@@ -177,7 +179,9 @@ pub fn stack_section(chain: &Chain) -> Result<Option<StackSection>, Failure> {
         .enumerate()
         .map(|(index, (plate, section))| SectionPlate {
             name: plate.name.clone(),
-            solid: solid(joint, (index, count), (plate, &section, across)),
+            solid: extent(&section).map_or_else(Vec::new, |[range, heights]| {
+                solid(joint, (index, plate), (across, range, heights))
+            }),
             section,
         })
         .collect();
@@ -213,18 +217,20 @@ pub fn stack_section(chain: &Chain) -> Result<Option<StackSection>, Failure> {
     }))
 }
 
-/// What is solid of a plate: itself, its feet towards the other, its ribs away from it.
+/// From where to where a section reaches along the cut, and in height, m.
+fn extent(section: &Section) -> Option<[[f64; 2]; 2]> {
+    let ends = |lines: &[f64]| Some([*lines.first()?, *lines.last()?]);
+    Some([ends(&section.along)?, ends(&section.heights)?])
+}
+
+/// What is solid of a plate between two heights: itself, its feet towards the other, its ribs away
+/// from it; looked for along a range of the cut.
 fn solid(
     joint: &Joint,
-    (index, count): (usize, usize),
-    (plate, section, across): (&Plate, &Section, Across),
+    (index, plate): (usize, &Plate),
+    (across, [from, to], [foot, top]): (Across, [f64; 2], [f64; 2]),
 ) -> Vec<Solid> {
-    let (Some(&foot), Some(&top)) = (section.heights.first(), section.heights.last()) else {
-        return Vec::new();
-    };
-    let (Some(&from), Some(&to)) = (section.along.first(), section.along.last()) else {
-        return Vec::new();
-    };
+    let count = joint.plates.len();
     let own = |along: f64| plate.own(point(across, along));
     let open = |along: f64| {
         let at = point(across, along);

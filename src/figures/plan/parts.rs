@@ -23,7 +23,7 @@ const HALO: f64 = 1.0;
 pub(super) const TINT: Colour = Colour(0xE4, 0xE8, 0xEB);
 
 /// Draws plates, their parts, heated zone, contact and bolts.
-pub(super) fn draw(sheet: &mut Sheet, view: &View, map: &PlanMap) {
+pub(in crate::figures) fn draw(sheet: &mut Sheet, view: &View, map: &PlanMap) {
     for detail in &map.details {
         if detail.kind == DetailKind::CutOut {
             let area = view.frame.area(&detail.shape.edge(view));
@@ -111,7 +111,11 @@ fn halo(stroke: Stroke) -> Stroke {
 }
 
 /// Samples with their names, lines first, then the colours that have a meaning of their own.
-pub(super) fn key(map: &PlanMap, colours: &Axis, ground: Option<Colour>) -> Vec<(Sample, String)> {
+pub(in crate::figures) fn key(
+    map: &PlanMap,
+    colours: &Axis,
+    ground: Option<Colour>,
+) -> Vec<(Sample, String)> {
     let mut items: Vec<(Sample, String)> = map
         .outlines
         .iter()

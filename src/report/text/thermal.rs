@@ -12,7 +12,7 @@ use crate::{
 use std::fmt::Write;
 
 /// 0 °C, K.
-const ICE_POINT: f64 = 273.15;
+pub(in crate::report) const ICE_POINT: f64 = 273.15;
 
 /// The results with their planes: contact only and with spreading, never one for the other.
 pub fn results(case: &CaseResult) -> String {
@@ -193,7 +193,8 @@ pub fn verdict(estimate: &Estimate, case: &CaseResult) -> String {
     text
 }
 
-fn required(requirement: &RequirementResult, draws: u32) -> String {
+/// The requirement and how the joint stands to it.
+pub(in crate::report) fn required(requirement: &RequirementResult, draws: u32) -> String {
     let (quantity, unit) = match requirement.kind {
         RequirementKind::Rise => ("rise".to_owned(), "K"),
         RequirementKind::HottestRise => ("rise of the hottest point".to_owned(), "K"),

@@ -1,0 +1,358 @@
+//! `report`: everything about a joint on one page that is handed over.
+
+use crate::{
+    cli::{
+        batch::Batch,
+        chain::{self, Asked, Effort, Entry, Handed, Task},
+        check,
+        compare::{plot, versions_of},
+        console::{Console, Outcome, Trouble},
+        drawings,
+        draws::Draws,
+        field::Field,
+        input::{self, Source},
+        output::{Existing, Target},
+        results::stem,
+    },
+    figures::{Drawing, Format},
+    joint::{self, Joint, Version},
+    report::page::{self, Contents, Fields, Figure, Figures},
+};
+use clap::Args;
+use sha2::{Digest, Sha256};
+use std::{
+    collections::BTreeMap,
+    fmt::Write,
+    fs,
+    path::{Path, PathBuf},
+};
+
+const EXAMPLES: &str = "\
+Examples:
+  ringsum report joint.toml --out joint.html
+  ringsum report joint.toml --out joint.html --thorough
+  ringsum report joints/*.toml --out pages --jobs 2";
+
+/// Points across a map, and across one whose values are read under the pointer.
+const COLUMNS: usize = 400;
+const POINTED: usize = 96;
+
+/// Everything about a joint on one page: drawing, inputs, chain with its laws, results, torque
+/// window, drivers, cautions
+///
+/// The page is one HTML file that needs no network and prints on A4.
+#[derive(Debug, Args)]
+#[command(after_help = EXAMPLES)]
+pub struct Report {
+    /// Joint files; - reads standard input
+    #[arg(required = true, value_name = "FILE")]
+    files: Vec<PathBuf>,
+    /// The page, PAGE.html; of several files a folder, one page for each
+    #[arg(long, value_name = "PAGE")]
+    out: PathBuf,
+    #[command(flatten)]
+    field: Field,
+    #[command(flatten)]
+    draws: Draws,
+    /// Override a field: --set 'plate.box.thickness="6 mm"'
+    #[arg(long = "set", value_name = "KEY=VALUE")]
+    sets: Vec<String>,
+    /// Take a variant of the joint by its name
+    #[arg(long, value_name = "NAME")]
+    variant: Option<String>,
+    /// Number of torques in the torque table
+    #[arg(long, value_name = "N", default_value_t = TORQUES,
+          value_parser = clap::value_parser!(u32).range(2..=200))]
+    torques: u32,
+    /// Draw also the torque table and the variants, on the field of the results; takes its time
+    #[arg(long)]
+    thorough: bool,
+    /// Exit with 3 when a caution speaks of a joint
+    #[arg(long)]
+    strict: bool,
+    #[command(flatten)]
+    batch: Batch,
+    /// Replace pages that exist
+    #[arg(long)]
+    force: bool,
+}
+
+impl Report {
+    /// Makes every page, also after a file at fault; checks every target before computing.
+    pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
+        let files = self.batch.files(&self.files);
+        input::stdin_at_most_once(&files)?;
+        let targets = self.targets(&files)?;
+        self.batch.run(&files, console, &|index, path, console| {
+            self.one(path, &targets[index], console)
+        })
+    }
+
+    /// Where each page goes: the page itself, or a folder with one for each file.
+    fn targets(&self, files: &[PathBuf]) -> Result<Vec<Target>, Trouble> {
+        let existing = Existing::from_force(self.force);
+        let ending = self.out.extension().and_then(|ending| ending.to_str());
+        let is_page = ending.is_some_and(|ending| {
+            ending.eq_ignore_ascii_case("html") || ending.eq_ignore_ascii_case("htm")
+        });
+        if is_page {
+            if self.files.len() > 1 {
+                return Err(Trouble::usage(
+                    format!(
+                        "`{}` is one page, and several files are named",
+                        self.out.display()
+                    ),
+                    "name a folder: --out pages",
+                ));
+            }
+            return Ok(vec![Target::new(&self.out, existing)?]);
+        }
+        let mut known: BTreeMap<String, &PathBuf> = BTreeMap::new();
+        for path in files {
+            // Names that differ in case alone are one file on some systems.
+            if let Some(other) = known.insert(stem(path).to_lowercase(), path) {
+                return Err(Trouble::usage(
+                    format!(
+                        "`{}` and `{}` would both be written to `{}.html`",
+                        other.display(),
+                        path.display(),
+                        stem(path)
+                    ),
+                    "write them to folders of their own",
+                ));
+            }
+        }
+        if self.out.is_file() {
+            return Err(Trouble::usage(
+                format!(
+                    "`{}` is a file that does not end in .html",
+                    self.out.display()
+                ),
+                "name a page, `joint.html`, or a folder",
+            ));
+        }
+        fs::create_dir_all(&self.out).map_err(|found| {
+            Trouble::Failure(format!(
+                "the folder `{}` cannot be made: {found}",
+                self.out.display()
+            ))
+        })?;
+        let page = |path: &PathBuf| self.out.join(format!("{}.html", stem(path)));
+        files
+            .iter()
+            .map(|path| Target::new(&page(path), existing))
+            .collect()
+    }
+
+    fn one(&self, path: &Path, target: &Target, console: &mut Console) -> Result<Outcome, Trouble> {
+        let (source, versions) =
+            check::read_versions(path, &self.sets, console).map_err(|refused| refused.trouble())?;
+        let (place, joint) = self.chosen(&source, &versions)?;
+        let task = Task {
+            joint,
+            choice: self.field.choice()?,
+            watch: self.batch.watch(),
+        };
+        let asked = Asked {
+            options: self.draws.options(),
+            effort: if self.thorough {
+                Effort::Whole
+            } else {
+                Effort::Split
+            },
+            torques: self.torques as usize,
+            columns: COLUMNS,
+            pointed: POINTED,
+        };
+        let entries: Vec<Entry> = versions_of(None, versions.clone()).collect();
+        let found = chain::handed(&task, &entries, &asked)
+            .map_err(|trouble| trouble.of_file(&source.name))?;
+        let figures = figures(joint, &entries, &found)?;
+        let stated = joint::stated(&source.text, (&self.sets, place));
+        let page = page::page(&Contents {
+            joint,
+            source: page::Source {
+                name: &source.name,
+                text: &source.text,
+                digest: &digest(&source.text),
+                command: &self.command(path, target),
+            },
+            stated: &stated,
+            estimate: &found.fields.nominal,
+            figures: &figures,
+            fields: Some(Fields {
+                map: &found.pointed.map,
+                heat: found.pointed.heat.as_ref(),
+                watts: joint.service.heat,
+            }),
+            torque: found.torque.as_ref(),
+            media: &found.media,
+            ranking: found.ranking.as_ref(),
+            comparison: found.comparison.as_ref().map(|(comparison, _)| comparison),
+            left_out: &found.left_out,
+        })
+        .map_err(|why| Trouble::Failure(format!("{}: the page failed: {why}", source.name)))?;
+        target.write(page.as_bytes())?;
+        console.message(&format!("wrote {}\n", target.path.display()));
+        Ok(if self.strict && found.fields.nominal.has_cautions() {
+            Outcome::Cautioned
+        } else {
+            Outcome::Done
+        })
+    }
+
+    /// The version asked for, with the place of its variant.
+    fn chosen<'a>(
+        &self,
+        source: &Source,
+        versions: &'a [Version],
+    ) -> Result<(Option<usize>, &'a Joint), Trouble> {
+        let stated = || Trouble::Failure(format!("{}: no joint was read", source.name));
+        let Some(name) = &self.variant else {
+            let first = versions.first().ok_or_else(stated)?;
+            return Ok((None, &first.joint));
+        };
+        let found = versions
+            .iter()
+            .position(|version| version.name.as_ref() == Some(name));
+        if let Some(place) = found {
+            // The joint as stated stands before its variants.
+            return Ok((place.checked_sub(1), &versions[place].joint));
+        }
+        let names: Vec<&str> = versions
+            .iter()
+            .filter_map(|each| each.name.as_deref())
+            .collect();
+        Err(Trouble::usage(
+            format!("`{}` has no variant `{name}`", source.name),
+            if names.is_empty() {
+                "it has no variants: add a `[[variant]]` with its name".to_owned()
+            } else {
+                format!("its variants are {}", names.join(", "))
+            },
+        ))
+    }
+
+    /// The command that makes a page again.
+    fn command(&self, path: &Path, target: &Target) -> String {
+        let mut words = vec![
+            "ringsum".to_owned(),
+            "report".to_owned(),
+            path.display().to_string(),
+            "--out".to_owned(),
+            target.path.display().to_string(),
+        ];
+        words.extend(self.field.words());
+        let defaults = Draws::default();
+        if self.draws.draws != defaults.draws {
+            words.extend(["--draws".to_owned(), self.draws.draws.to_string()]);
+        }
+        if self.draws.seed != defaults.seed {
+            words.extend(["--seed".to_owned(), self.draws.seed.to_string()]);
+        }
+        for set in &self.sets {
+            words.extend(["--set".to_owned(), set.clone()]);
+        }
+        if let Some(variant) = &self.variant {
+            words.extend(["--variant".to_owned(), variant.clone()]);
+        }
+        if self.torques != TORQUES {
+            words.extend(["--torques".to_owned(), self.torques.to_string()]);
+        }
+        if self.thorough {
+            words.push("--thorough".to_owned());
+        }
+        let words: Vec<String> = words.iter().map(|word| quoted(word)).collect();
+        words.join(" ")
+    }
+}
+
+/// Torques of the table unless told otherwise.
+const TORQUES: u32 = 9;
+
+/// A word as a shell takes it.
+fn quoted(word: &str) -> String {
+    let plain = |letter: char| letter.is_alphanumeric() || "-_./=+:,@".contains(letter);
+    if !word.is_empty() && word.chars().all(plain) {
+        word.to_owned()
+    } else {
+        format!("'{}'", word.replace('\'', r"'\''"))
+    }
+}
+
+/// SHA-256 of a text, hexadecimal.
+fn digest(text: &str) -> String {
+    Sha256::digest(text.as_bytes())
+        .iter()
+        .fold(String::new(), |mut digits, byte| {
+            // Writing to a string cannot fail.
+            let _ = write!(digits, "{byte:02x}");
+            digits
+        })
+}
+
+/// Every drawing of a page.
+fn figures(joint: &Joint, entries: &[Entry], found: &Handed) -> Result<Figures, Trouble> {
+    let drawn = |drawing: &Drawing, caption: &str, plan: bool| -> Result<Figure, Trouble> {
+        let bytes = chain::render(drawing, Format::Svg)?;
+        let svg = String::from_utf8(bytes)
+            .map_err(|_| Trouble::Failure("a figure is no text".to_owned()))?;
+        Ok(Figure {
+            svg,
+            caption: caption.to_owned(),
+            plan,
+        })
+    };
+    let plain = |drawing: &Drawing, caption: &str| drawn(drawing, caption, false).map(Some);
+    let mut all = Figures {
+        joint: plain(
+            &Drawing::Joint(Box::new(drawings::plan_and_cut(joint))),
+            "The joint in plan and cut along a row of bolts, to one scale; heads and nuts in their usual proportions.",
+        )?,
+        ..Figures::default()
+    };
+    for (name, drawing) in drawings::of_joint(joint, &found.fields) {
+        let (caption, plan) = drawings::told(name);
+        all.fields.push(drawn(&drawing, caption, plan)?);
+    }
+    if let Some(sweep) = &found.torque {
+        all.torque = plain(
+            &Drawing::Torque(Box::new(sweep.clone())),
+            "Resistance against torque, with what strength allows.",
+        )?;
+    }
+    if let Some(ranking) = &found.ranking {
+        all.drivers = plain(
+            &Drawing::Tornado(Box::new(ranking.clone())),
+            "Source to sink with each input alone at its 5 % and at its 95 %, all others nominal.",
+        )?;
+    }
+    if let Some((comparison, maps)) = &found.comparison {
+        all.comparison = plain(
+            &Drawing::Comparison(Box::new(plot(entries, (comparison, maps)))),
+            "Source to sink and contact pressure of every version.",
+        )?;
+    }
+    Ok(all)
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn the_digest_is_sha_256() {
+        // FIPS 180-4, example "abc".
+        assert_eq!(
+            digest("abc"),
+            "ba7816bf8f01cfea414140de5dae2223b00361a396177a9cb410ff61f20015ad"
+        );
+    }
+
+    #[test]
+    fn words_are_quoted_for_a_shell() {
+        assert_eq!(quoted("joints/a.toml"), "joints/a.toml");
+        assert_eq!(quoted("a=\"6 mm\""), "'a=\"6 mm\"'");
+        assert_eq!(quoted("it's"), r"'it'\''s'");
+    }
+}
