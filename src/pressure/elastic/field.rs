@@ -1,7 +1,7 @@
 //! The solved field: pressure and gap at every column of every interface.
 
 use crate::pressure::elastic::{
-    End, Failure, Mesh, Problem,
+    Bolt, End, Failure, Mesh, Problem,
     system::{Pairing, System},
 };
 
@@ -117,7 +117,18 @@ impl Field {
             .zip(&state.active)
             .map(|(pairing, active)| contradiction((pairing, system), &state, active))
             .fold(0.0, f64::max);
-        let bolts = problem.bolts.iter().map(|bolt| Place {
+        Ok(Self {
+            bolts: Self::places(problem),
+            mesh,
+            faces,
+            health,
+            state,
+        })
+    }
+
+    /// The bolts of a problem.
+    pub(super) fn places(problem: &Problem) -> Vec<Place> {
+        let place = |bolt: &Bolt| Place {
             at: bolt.at,
             force: bolt.force,
             hole_radius: bolt.hole_radii.iter().copied().fold(0.0, f64::max),
@@ -125,14 +136,8 @@ impl Field {
                 End::Nut(seat) => bolt.head.outer.max(seat.outer),
                 End::Thread { .. } => bolt.head.outer,
             },
-        });
-        Ok(Self {
-            bolts: bolts.collect(),
-            mesh,
-            faces,
-            health,
-            state,
-        })
+        };
+        problem.bolts.iter().map(place).collect()
     }
 
     /// The field under another force: forces, pressures and gaps times a factor.
