@@ -115,7 +115,7 @@ impl Field {
             .pairings
             .iter()
             .zip(&state.active)
-            .map(|(pairing, active)| contradiction((pairing, system), &state, active))
+            .map(|(pairing, active)| contradiction((pairing, system), &state.displacement, active))
             .fold(0.0, f64::max);
         Ok(Self {
             bolts: Self::places(problem),
@@ -211,8 +211,12 @@ fn face_field((mesh, system): (&Mesh, &System), state: &State, face: usize) -> F
 }
 
 /// Largest closure outside the set or opening inside it, over the largest closure.
-fn contradiction((pairing, system): (&Pairing, &System), state: &State, active: &[bool]) -> f64 {
-    let gap = |column: usize| pairing.gap(&system.operator, &state.displacement, column);
+pub(super) fn contradiction(
+    (pairing, system): (&Pairing, &System),
+    displacement: &[f64],
+    active: &[bool],
+) -> f64 {
+    let gap = |column: usize| pairing.gap(&system.operator, displacement, column);
     let (mut worst, mut deepest) = (0.0_f64, f64::MIN_POSITIVE);
     for (column, active) in active.iter().enumerate() {
         if pairing.weight[column] > 0.0 {
