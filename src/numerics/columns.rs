@@ -53,6 +53,7 @@
 mod form;
 mod kernel;
 mod lines;
+mod mirror;
 mod operator;
 mod plan;
 mod region;
@@ -61,6 +62,7 @@ mod through;
 
 pub use form::{Form, Scalar, Solid};
 pub use lines::{Fine, Stop, lines};
+pub use mirror::Mirror;
 pub use operator::{Conductor, Layer, Operator, Tie};
 pub use plan::Plan;
 pub use region::{Disc, Region};

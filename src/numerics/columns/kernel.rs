@@ -15,6 +15,7 @@ pub trait Number:
     + Mul<Output = Self>
     + AddAssign
     + SubAssign
+    + PartialEq
     + 'static
 {
     /// The nearest number.
@@ -72,6 +73,8 @@ pub struct Matrix<F, T> {
     pub sets: Vec<Vec<T>>,
     /// Couplings.
     pub couplings: Vec<Coupling<T>>,
+    /// Unknowns that stay zero on the last line across x, and on the last across y.
+    pub held: [Vec<usize>; 2],
     /// The form.
     pub form: std::marker::PhantomData<F>,
 }
@@ -91,6 +94,10 @@ impl<F: Form, T: Number> Matrix<F, T> {
         }
         for coupling in &self.couplings {
             let row = &coupling.stencil[column];
+            // Not negative as a whole, so nothing stands beside an empty diagonal.
+            if row[4] == T::default() {
+                continue;
+            }
             let mut sum = T::default();
             for (neighbour, values) in neighbours {
                 let minus = coupling.minus.map_or(T::default(), |at| values[at]);
@@ -131,6 +138,14 @@ impl<F: Form, T: Number> Matrix<F, T> {
                 *image += *value;
             }
         }
+    }
+
+    /// Unknowns of a column that stay zero.
+    pub fn held_at(&self, column: usize) -> impl Iterator<Item = usize> + '_ {
+        let [nx, ny] = self.lines;
+        let on = [column / ny + 1 == nx, column % ny + 1 == ny];
+        let lists = self.held.iter().zip(on).filter(|(_, on)| *on);
+        lists.flat_map(|(held, _)| held.iter().copied())
     }
 
     /// Adds the block between a column and one of its neighbours: `add(row, column, value)`.
@@ -188,6 +203,7 @@ impl<F: Form, T: Number> Matrix<F, T> {
                 .iter()
                 .map(|coupling| coupling.converted(convert))
                 .collect(),
+            held: self.held.clone(),
             form: std::marker::PhantomData,
         }
     }

@@ -79,6 +79,7 @@ impl<F: Form> Operator<F> {
                 slabs: Vec::new(),
                 sets: Vec::new(),
                 couplings: Vec::new(),
+                held: [Vec::new(), Vec::new()],
                 form: std::marker::PhantomData,
             },
             groups: ranges,
@@ -89,6 +90,11 @@ impl<F: Form> Operator<F> {
     /// The plan.
     pub fn plan(&self) -> &Plan {
         &self.plan
+    }
+
+    /// First unknown and number of unknowns of every group.
+    pub fn ranges(&self) -> &[[usize; 2]] {
+        &self.groups
     }
 
     /// Number of unknowns, padding not counted.
@@ -155,6 +161,12 @@ impl<F: Form> Operator<F> {
         }
     }
 
+    /// Holds unknowns at zero on the last line across an axis, 0 for x and 1 for y: displacements across
+    /// a mirror that stands there. Loads and start values there must be zero.
+    pub fn hold(&mut self, axis: usize, unknowns: impl IntoIterator<Item = usize>) {
+        self.matrix.held[axis].extend(unknowns);
+    }
+
     /// Both unknowns that a tie joins; twice the same where it holds to the ground.
     pub fn ends(&self, tie: usize) -> [usize; 2] {
         let coupling = &self.matrix.couplings[tie];
@@ -186,6 +198,9 @@ impl<F: Form> Operator<F> {
                         &neighbours[..count],
                         &mut row[j * stride..][..stride],
                     );
+                    for unknown in self.matrix.held_at(i * ny + j) {
+                        row[j * stride + unknown] = 0.0;
+                    }
                 }
             });
         for conductor in &self.conductors {

@@ -2,7 +2,7 @@
 
 use rayon::prelude::*;
 
-use crate::numerics::columns::Plan;
+use crate::numerics::columns::{Mirror, Plan};
 
 /// Samples along one side of a cell.
 const SIDE: usize = 16;
@@ -84,6 +84,17 @@ impl Region {
     #[must_use]
     pub fn without(&self, other: &Self) -> Self {
         self.combined(other, |a, b| a & !b)
+    }
+
+    /// Its cells in the part of a plan that stands for the whole.
+    #[must_use]
+    pub fn part(&self, mirror: &Mirror) -> Self {
+        let cells = 0..mirror.part().cells();
+        Self {
+            cells: cells
+                .map(|cell| self.cells[mirror.original_cell(cell)])
+                .collect(),
+        }
     }
 
     fn combined(&self, other: &Self, rule: impl Fn(u64, u64) -> u64) -> Self {

@@ -17,7 +17,7 @@ const LANES: usize = 4;
 /// D⁻¹ r = y − D₀⁻¹ B S⁻¹ Bᵀ y,   y = D₀⁻¹ r,   S = diag(1/d) + Bᵀ D₀⁻¹ B
 /// ```
 ///
-/// D₀ stays when ties change. Unknowns without any equation get the value 0.
+/// D₀ stays when ties change. Unknowns that are held or without any equation get the value 0.
 #[derive(Clone, Debug)]
 pub(super) struct Blocks {
     groups: Vec<Group>,
@@ -99,6 +99,12 @@ impl Blocks {
                     |coupling| between(coupling).is_none(),
                     |row, from, value| block[row * size + from] += value,
                 );
+                for held in matrix.held_at(column) {
+                    for other in 0..size {
+                        block[held * size + other] = 0.0;
+                        block[other * size + held] = 0.0;
+                    }
+                }
                 for group in &groups {
                     invert((&block, size), group, &mut own[group.offset..]).map_err(|row| {
                         NotPositiveDefinite {

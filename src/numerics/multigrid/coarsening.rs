@@ -118,6 +118,7 @@ impl Transfer {
                 .iter()
                 .map(|coupling| coarse_coupling(coupling, self))
                 .collect(),
+            held: fine.held.clone(),
             form: std::marker::PhantomData,
         }
     }

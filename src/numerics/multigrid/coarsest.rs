@@ -104,8 +104,20 @@ impl<F: Form> Coarsest<F> {
                 );
             }
         }
+        for place in 0..places {
+            let at = place * self.block;
+            for held in self.matrix.held_at(self.column(link, place)) {
+                front.column_mut(at + held).fill(0.0);
+                front.row_mut(at + held).fill(0.0);
+            }
+            if !last {
+                for held in self.matrix.held_at(self.column(link + 1, place)) {
+                    front.row_mut(size + at + held).fill(0.0);
+                }
+            }
+        }
         for at in 0..size {
-            // Unknowns that no cell carries stay zero.
+            // Unknowns that are held or that no cell carries stay zero.
             if front[(at, at)] == 0.0 {
                 front[(at, at)] = 1.0;
             }
@@ -120,6 +132,13 @@ impl<F: Form> Coarsest<F> {
         self.copy(values, &mut ordered, |value, own| {
             own.copy_from_slice(value);
         });
+        for link in 0..self.links.len() {
+            for place in 0..self.matrix.lines[1 - self.along] {
+                for held in self.matrix.held_at(self.column(link, place)) {
+                    ordered[link * size + place * self.block + held] = 0.0;
+                }
+            }
+        }
         for (link, factor) in self.links.iter().enumerate() {
             let part = &mut ordered[link * size..][..2 * size];
             for (at, column) in factor.column_iter().enumerate() {

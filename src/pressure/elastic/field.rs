@@ -1,7 +1,7 @@
 //! The solved field: pressure and gap at every column of every interface.
 
 use crate::pressure::elastic::{
-    End, Failure, Mesh, Problem,
+    Bolt, End, Failure, Mesh, Problem,
     system::{Pairing, System},
 };
 
@@ -115,9 +115,20 @@ impl Field {
             .pairings
             .iter()
             .zip(&state.active)
-            .map(|(pairing, active)| contradiction((pairing, system), &state, active))
+            .map(|(pairing, active)| contradiction((pairing, system), &state.displacement, active))
             .fold(0.0, f64::max);
-        let bolts = problem.bolts.iter().map(|bolt| Place {
+        Ok(Self {
+            bolts: Self::places(problem),
+            mesh,
+            faces,
+            health,
+            state,
+        })
+    }
+
+    /// The bolts of a problem.
+    pub(super) fn places(problem: &Problem) -> Vec<Place> {
+        let place = |bolt: &Bolt| Place {
             at: bolt.at,
             force: bolt.force,
             hole_radius: bolt.hole_radii.iter().copied().fold(0.0, f64::max),
@@ -125,14 +136,8 @@ impl Field {
                 End::Nut(seat) => bolt.head.outer.max(seat.outer),
                 End::Thread { .. } => bolt.head.outer,
             },
-        });
-        Ok(Self {
-            bolts: bolts.collect(),
-            mesh,
-            faces,
-            health,
-            state,
-        })
+        };
+        problem.bolts.iter().map(place).collect()
     }
 
     /// The field under another force: forces, pressures and gaps times a factor.
@@ -206,8 +211,12 @@ fn face_field((mesh, system): (&Mesh, &System), state: &State, face: usize) -> F
 }
 
 /// Largest closure outside the set or opening inside it, over the largest closure.
-fn contradiction((pairing, system): (&Pairing, &System), state: &State, active: &[bool]) -> f64 {
-    let gap = |column: usize| pairing.gap(&system.operator, &state.displacement, column);
+pub(super) fn contradiction(
+    (pairing, system): (&Pairing, &System),
+    displacement: &[f64],
+    active: &[bool],
+) -> f64 {
+    let gap = |column: usize| pairing.gap(&system.operator, displacement, column);
     let (mut worst, mut deepest) = (0.0_f64, f64::MIN_POSITIVE);
     for (column, active) in active.iter().enumerate() {
         if pairing.weight[column] > 0.0 {

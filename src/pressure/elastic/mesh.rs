@@ -1,7 +1,7 @@
 //! The grid that mechanics and heat share: lines, covers, layers, faying areas.
 
 use crate::{
-    numerics::columns::{Disc, Plan, Region},
+    numerics::columns::{Disc, Mirror, Plan, Region},
     pressure::elastic::{Body, Failure, Problem, resolution},
 };
 
@@ -66,6 +66,17 @@ impl MeshLayer {
     pub fn last_node(&self) -> usize {
         self.first_node + self.heights.len() * self.degree
     }
+
+    fn part(&self, mirror: &Mirror) -> Self {
+        let region = self.region.part(mirror);
+        Self {
+            shares: region.shares(),
+            region,
+            inlay: self.inlay.as_ref().map(|inlay| inlay.part(mirror)),
+            heights: self.heights.clone(),
+            ..*self
+        }
+    }
 }
 
 impl MeshBody {
@@ -101,6 +112,31 @@ impl Mesh {
             bodies,
             faces,
         })
+    }
+
+    /// The part of it that stands for the whole.
+    pub(super) fn part(&self, mirror: &Mirror) -> Self {
+        let plan = mirror.part().clone();
+        let bodies = self.bodies.iter().map(|body| MeshBody {
+            layers: body.layers.iter().map(|layer| layer.part(mirror)).collect(),
+            ..*body
+        });
+        let faces = self.faces.iter().map(|face| {
+            let (contact, beside) = (face.contact.part(mirror), face.beside.part(mirror));
+            MeshFace {
+                weight: contact.weights(&plan),
+                full_weight: contact.full_weights(&plan),
+                open_weight: beside.weights(&plan),
+                open_height: mirror.kept(&face.open_height),
+                contact,
+                beside,
+            }
+        });
+        Self {
+            bodies: bodies.collect(),
+            faces: faces.collect(),
+            plan,
+        }
     }
 
     /// The mesh that a problem asks for, without solving anything.

@@ -8,7 +8,7 @@ use crate::{
     numerics::{banded::NotPositiveDefinite, columns::Solid},
     pressure::elastic::{
         Body, Failure, Field, Head, Health, Mesh, Problem, Stage,
-        field::State,
+        field::{State, contradiction},
         system::{Pairing, System, stuck},
     },
 };
@@ -35,6 +35,10 @@ const LAZY: f64 = 0.05;
 const EXPECTED: f64 = 0.6;
 /// Share of its energy norm at the start that the error of a linear solution keeps, but for the last.
 const SOFT_MOTIONS: f64 = 1e-2;
+/// Steps after which columns may go on changing that press next to nothing, and how much that is: their
+/// gap or closure over the deepest closure, which is their pressure over the peak.
+const LONG: usize = 20;
+const NEXT_TO_NOTHING: f64 = 1e-4;
 /// Changes of a column in accurate solutions after which stuck faces slide there.
 const WAVERING: u8 = 3;
 
@@ -227,7 +231,7 @@ impl Search<'_> {
             let last = changed;
             changed = count_changes(&self.active, &sets);
             self.problem.tell(Stage::Contact, step, residual);
-            if changed == 0 && course.is_last() {
+            if course.is_last() && (changed == 0 || step >= LONG && self.hardly_wavers()) {
                 return Ok((step, residual));
             }
             if course.is_accurate() {
@@ -266,6 +270,15 @@ impl Search<'_> {
         self.iterations += solved.iterations;
         self.descend(&before);
         Ok((self.touching(), solved.residual))
+    }
+
+    /// Whether the columns that contradict the set do so by next to nothing.
+    fn hardly_wavers(&self) -> bool {
+        let pairs = self.system.pairings.iter().zip(&self.active);
+        let worst = pairs.map(|(pairing, active)| {
+            contradiction((pairing, &self.system), &self.displacement, active)
+        });
+        worst.fold(0.0, f64::max) <= NEXT_TO_NOTHING
     }
 
     /// Counts which columns change while solutions are accurate.

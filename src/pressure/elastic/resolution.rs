@@ -2,7 +2,9 @@
 
 use crate::{
     numerics::columns::{Fine, Plan, Stop, lines},
-    pressure::elastic::{Bolt, End, Faces, Failure, Fineness, Head, Layer, Problem, Through},
+    pressure::elastic::{
+        Bolt, End, Faces, Failure, Fineness, Head, Layer, Problem, Through, symmetry,
+    },
 };
 
 /// Size of a grid.
@@ -81,20 +83,27 @@ pub(super) fn nodes(problem: &Problem, body: usize) -> usize {
         .sum::<usize>()
 }
 
-/// Grid lines of the plan.
+/// Grid lines of the plan; where the joint may mirror they do, about a line in the middle.
 pub(super) fn plan(problem: &Problem) -> Result<Plan, Failure> {
+    let middles = symmetry::middles(problem);
     let [x, y] = [0, 1].map(|axis| {
         let fine: Vec<Fine> = problem
             .bolts
             .iter()
             .map(|bolt| around(bolt, axis, problem.fineness))
             .collect();
-        lines(
-            &stops(problem, axis),
-            &fine,
-            GROWTH,
-            WIDEST * problem.bearing_radius(),
-        )
+        let laid = |stops: &[Stop]| lines(stops, &fine, GROWTH, WIDEST * problem.bearing_radius());
+        let stops = stops(problem, axis);
+        match middles[axis] {
+            Some(middle) => {
+                let mut half = laid(&below(&stops, middle));
+                let beyond = half.iter().rev().skip(1).map(|at| 2.0 * middle - at);
+                let beyond: Vec<f64> = beyond.collect();
+                half.extend(beyond);
+                half
+            }
+            None => laid(&stops),
+        }
     });
     if x.len() < 2 || y.len() < 2 || x.len() > MOST_LINES || y.len() > MOST_LINES {
         return Err(Failure::Unsound {
@@ -102,6 +111,19 @@ pub(super) fn plan(problem: &Problem) -> Result<Plan, Failure> {
         });
     }
     Ok(Plan::new(x, y))
+}
+
+/// Stops up to the line of a mirror, with the images of those beyond it and one on the line.
+fn below(stops: &[Stop], middle: f64) -> Vec<Stop> {
+    let folded = stops.iter().map(|stop| Stop {
+        at: middle - (stop.at - middle).abs(),
+        rank: stop.rank,
+    });
+    let line = Stop {
+        at: middle,
+        rank: 0,
+    };
+    folded.chain([line]).collect()
 }
 
 fn around(bolt: &Bolt, axis: usize, fineness: Fineness) -> Fine {

@@ -4,7 +4,7 @@ use std::f64::consts::TAU;
 
 use crate::{
     numerics::columns::{
-        Disc, Layer, Operator, Plan, Region, Solid, Tie, gradient, lumped, span_loads,
+        Disc, Layer, Mirror, Operator, Plan, Region, Solid, Tie, gradient, lumped, span_loads,
     },
     pressure::elastic::{
         Annulus, Bolt, Compliance, End, Faces, Failure, Head, Layer as Material, Mesh, Problem,
@@ -72,11 +72,15 @@ impl Pairing {
 
 impl System {
     /// The equations of a problem on its mesh.
-    pub fn new(problem: &Problem, mesh: &Mesh) -> Result<Self, Failure> {
+    ///
+    /// With a mirror the mesh is the part of it that stands for the whole: nothing moves across the
+    /// mirror there.
+    pub fn new(problem: &Problem, mesh: &Mesh, mirror: Option<&Mirror>) -> Result<Self, Failure> {
         problem.tell(Stage::Matrices, 0, f64::NAN);
         let mut groups: Vec<usize> = mesh.bodies.iter().map(|body| 3 * body.nodes).collect();
         groups.resize(groups.len() + resolution::loose(problem), 1);
         let mut operator = Operator::new(&mesh.plan, &groups);
+        let whole = mirror.map_or(&mesh.plan, Mirror::whole);
         for (group, (body, own)) in problem.bodies.iter().zip(&mesh.bodies).enumerate() {
             let rests = group + 1 == mesh.bodies.len();
             for (material, layer) in body.layers.iter().zip(&own.layers) {
@@ -87,7 +91,7 @@ impl System {
                         first_node: layer.first_node,
                         heights: &layer.heights,
                         degree: layer.degree,
-                        constants: solid((moduli, material.thickness), &mesh.plan, rests),
+                        constants: solid((moduli, material.thickness), whole, rests),
                     });
                 };
                 let own = [material.youngs_modulus, material.poisson];
@@ -98,6 +102,13 @@ impl System {
                     }
                     None => add(&layer.shares, own),
                 }
+            }
+        }
+        let across = mirror.map_or([false; 2], Mirror::across);
+        for (axis, _) in across.into_iter().enumerate().filter(|(_, held)| *held) {
+            for (group, body) in mesh.bodies.iter().enumerate() {
+                let first = operator.unknown(group, axis, 0);
+                operator.hold(axis, first..first + body.nodes);
             }
         }
         let mut system = Self {

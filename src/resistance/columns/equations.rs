@@ -7,8 +7,8 @@ pub(super) use family::Reduced;
 
 use crate::{
     numerics::{
-        columns::{Conductor, Layer, Operator, Scalar, Tie, lumped},
-        multigrid::{Coarsening, Effort, Factor, Multigrid, conjugate_gradients},
+        columns::{Conductor, Layer, Mirror, Operator, Scalar, Tie, lumped},
+        multigrid::{Coarsening, Effort, Factor, Multigrid, Solved, Stalled, conjugate_gradients},
     },
     resistance::{
         Failure,
@@ -53,7 +53,9 @@ pub(super) enum Arrangement {
 /// One set of equations, ready for any local conductance.
 pub(super) struct Equations {
     operator: Operator<Scalar>,
-    /// Made when it is first needed.
+    /// Where everything mirrors, with the equations of the part that is solved for the whole.
+    folded: Option<(Mirror, Operator<Scalar>)>,
+    /// Of the equations that are solved; made when it is first needed.
     multigrid: Option<Multigrid<Scalar>>,
     /// For every body its group and its lowest node there.
     places: Vec<[usize; 2]>,
@@ -190,6 +192,7 @@ impl Equations {
         Self {
             rise: operator.zeros(),
             operator,
+            folded: None,
             multigrid: None,
             places,
             ties,
@@ -212,38 +215,99 @@ impl Equations {
 
     /// Joins the bodies: `conductances` holds one value for every column of every part, W/K.
     pub(super) fn join(&mut self, conductances: &[Vec<Vec<f64>>]) -> Result<(), Failure> {
+        self.set_faces(conductances);
+        self.find_mirror();
         // Bolts are rank-one terms that the cycle does not feel; it sees them beside the faces, in
         // the first part that a column belongs to.
-        for (interface, ties) in self.ties.iter().enumerate() {
+        let mut guided = conductances.to_vec();
+        for (parts, threads) in guided.iter_mut().zip(&self.threads) {
             let mut beside = self.beside.clone();
-            for (part, tie) in ties.iter().enumerate() {
-                let mut guided = conductances[interface][part].clone();
-                let threads = &self.threads[interface][part];
-                for ((guided, thread), bolt) in guided.iter_mut().zip(threads).zip(&mut beside) {
+            for (part, threads) in parts.iter_mut().zip(threads) {
+                for ((guided, thread), bolt) in part.iter_mut().zip(threads).zip(&mut beside) {
                     if *thread > 0.0 {
                         *guided += thread + std::mem::take(bolt);
                     }
                 }
-                self.operator.set_tie(*tie, &guided);
             }
         }
-        let guided = match &mut self.multigrid {
-            Some(multigrid) => multigrid.renew(&self.operator, Factor::Renewed),
-            none => Multigrid::new(&self.operator, Coarsening::FULL).map(|new| *none = Some(new)),
-        };
-        guided.map_err(|_| stopped(0, 1.0))?;
+        self.set_faces(&guided);
+        self.guide()?;
+        self.set_faces(conductances);
+        Ok(())
+    }
+
+    /// Gives the ties of the faces their conductances, in the whole and in its part.
+    fn set_faces(&mut self, conductances: &[Vec<Vec<f64>>]) {
         for (parts, ties) in conductances.iter().zip(&self.ties) {
             for (part, tie) in parts.iter().zip(ties) {
                 self.operator.set_tie(*tie, part);
             }
         }
-        Ok(())
+        if let Some((mirror, folded)) = &mut self.folded {
+            mirror.refold(&self.operator, folded);
+        }
+    }
+
+    /// Looks where the equations mirror as they are now.
+    fn find_mirror(&mut self) {
+        let found = [[true, true], [true, false], [false, true]]
+            .into_iter()
+            .filter_map(|across| Mirror::of(self.operator.plan(), across))
+            .find(|mirror| mirror.holds(&self.operator, &self.load));
+        if self.folded.as_ref().map(|(mirror, _)| mirror) != found.as_ref() {
+            self.multigrid = None;
+            self.folded = found.map(|mirror| {
+                let folded = mirror.folded(&self.operator);
+                (mirror, folded)
+            });
+        }
+    }
+
+    /// Makes the cycle that guides the solution, or takes the present ties over into it.
+    fn guide(&mut self) -> Result<(), Failure> {
+        let solved = match &self.folded {
+            Some((_, folded)) => folded,
+            None => &self.operator,
+        };
+        let guided = match &mut self.multigrid {
+            Some(multigrid) => multigrid.renew(solved, Factor::Renewed),
+            none => Multigrid::new(solved, Coarsening::FULL).map(|new| *none = Some(new)),
+        };
+        guided.map_err(|_| stopped(0, 1.0))
+    }
+
+    /// One solution by conjugate gradients from the present temperatures; `share` is what may be left
+    /// of the load.
+    fn relax(&mut self, tolerance: f64, share: f64) -> Result<Solved, Stalled> {
+        let Some(multigrid) = &mut self.multigrid else {
+            return Err(Stalled {
+                iterations: 0,
+                residual: f64::NAN,
+            });
+        };
+        let effort = |operator: &Operator<Scalar>, load: &[f64]| Effort {
+            tolerance,
+            energy: None,
+            reference: Some(share * operator.dot(load, load).sqrt()),
+            most: MOST,
+        };
+        let Some((mirror, folded)) = &self.folded else {
+            let effort = effort(&self.operator, &self.load);
+            let given = (&self.load[..], &mut self.rise[..]);
+            return conjugate_gradients(&self.operator, multigrid, given, &effort);
+        };
+        let stride = self.rise.len() / self.operator.plan().columns();
+        let load = mirror.folded_load(&self.load, stride);
+        let mut rise = mirror.kept_vector(&self.rise, stride);
+        let effort = effort(folded, &load);
+        let solved = conjugate_gradients(folded, multigrid, (&load, &mut rise), &effort);
+        self.rise = mirror.spread_vector(&rise, stride);
+        solved
     }
 
     /// Solves from the last temperatures until source and sink agree.
     pub(super) fn solve(&mut self) -> Result<Health, Failure> {
-        let loaded = self.operator.dot(&self.load, &self.load).sqrt();
-        let unit = loaded / self.gripped.unwrap_or(1.0);
+        let unit = self.gripped.unwrap_or(1.0).recip();
         let mut health = Health {
             iterations: 0,
             residual: f64::INFINITY,
@@ -253,8 +317,8 @@ impl Equations {
         let mut tolerance = self.tolerance;
         let balanced = BALANCE * (self.tolerance / TOLERANCE).max(1.0);
         if self.multigrid.is_none() {
-            let new = Multigrid::new(&self.operator, Coarsening::FULL);
-            self.multigrid = Some(new.map_err(|_| stopped(0, 1.0))?);
+            self.find_mirror();
+            self.guide()?;
         }
         for _ in 0..ROUNDS {
             // A held source loads the equations with far more than passes through them: what
@@ -264,21 +328,7 @@ impl Equations {
             } else {
                 self.gripped.map_or(1.0, |grip| 1e-3 * grip)
             };
-            let effort = Effort {
-                tolerance,
-                energy: None,
-                reference: Some(unit * heat),
-                most: MOST,
-            };
-            let Some(multigrid) = &mut self.multigrid else {
-                break;
-            };
-            let solved = conjugate_gradients(
-                &self.operator,
-                multigrid,
-                (&self.load, &mut self.rise),
-                &effort,
-            );
+            let solved = self.relax(tolerance, unit * heat);
             let done = health.iterations;
             let (iterations, residual, stalled) = match solved {
                 Ok(solved) => (solved.iterations, solved.residual, false),
