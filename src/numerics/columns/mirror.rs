@@ -381,17 +381,10 @@ mod tests {
             });
         }
         let mut load = operator.zeros();
-        for (column, weight) in operator
-            .plan()
-            .clone()
-            .x
-            .iter()
-            .enumerate()
-            .map(|(i, x)| (operator.plan().column(i, 2), (x - 1.0).powi(2)))
-        {
-            load[operator.place(column, 2)] = weight;
-            let (image, _) = (column + 2, ());
-            load[operator.place(image, 2)] = weight;
+        for (i, x) in plan.x.iter().enumerate() {
+            for j in [2, 4] {
+                load[operator.place(plan.column(i, j), 2)] = (x - 1.0).powi(2);
+            }
         }
         (operator, load)
     }

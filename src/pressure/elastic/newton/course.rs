@@ -19,7 +19,7 @@ const PATIENCE: usize = 10;
 const SOFTENED: f64 = 1e-3;
 const HARDER: f64 = 32.0;
 /// Steps at one hardness of the faces after which the contact counts as not found.
-pub(super) const MOST_STEPS: usize = 60;
+pub(super) const MOST_STEPS: usize = 200;
 
 use crate::pressure::elastic::Fineness;
 
