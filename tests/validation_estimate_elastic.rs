@@ -263,7 +263,8 @@ fn gas_helps_less_where_the_bolt_parts_the_plates() {
         added(&in_vacuum)
     );
     let pumped = case(&air.in_vacuum().expect("a chain"));
-    near(added(&pumped), added(&in_vacuum), 1e-12, "air pumped out");
+    // Its temperatures start from those in air: conductivities differ by what that search leaves.
+    near(added(&pumped), added(&in_vacuum), 1e-9, "air pumped out");
     // Four times the force opens the plates as much wider.
     let hard = joint(&text(), &[AIR, "fastener.preload=\"8 kN\""]);
     let hard = case(&chain(&hard, Fineness::Normal));

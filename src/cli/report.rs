@@ -12,7 +12,7 @@ use crate::{
         field::Field,
         input::{self, Source},
         output::{Existing, Target},
-        results::stem,
+        results::{self, stem},
     },
     figures::{Drawing, Format},
     joint::{self, Joint, Version},
@@ -21,9 +21,7 @@ use crate::{
 use clap::Args;
 use sha2::{Digest, Sha256};
 use std::{
-    collections::BTreeMap,
     fmt::Write,
-    fs,
     path::{Path, PathBuf},
 };
 
@@ -107,21 +105,7 @@ impl Report {
             }
             return Ok(vec![Target::new(&self.out, existing)?]);
         }
-        let mut known: BTreeMap<String, &PathBuf> = BTreeMap::new();
-        for path in files {
-            // Names that differ in case alone are one file on some systems.
-            if let Some(other) = known.insert(stem(path).to_lowercase(), path) {
-                return Err(Trouble::usage(
-                    format!(
-                        "`{}` and `{}` would both be written to `{}.html`",
-                        other.display(),
-                        path.display(),
-                        stem(path)
-                    ),
-                    "write them to folders of their own",
-                ));
-            }
-        }
+        results::apart(files, ".html")?;
         if self.out.is_file() {
             return Err(Trouble::usage(
                 format!(
@@ -131,12 +115,7 @@ impl Report {
                 "name a page, `joint.html`, or a folder",
             ));
         }
-        fs::create_dir_all(&self.out).map_err(|found| {
-            Trouble::Failure(format!(
-                "the folder `{}` cannot be made: {found}",
-                self.out.display()
-            ))
-        })?;
+        results::make(&self.out)?;
         let page = |path: &PathBuf| self.out.join(format!("{}.html", stem(path)));
         files
             .iter()

@@ -141,6 +141,10 @@ impl Torque {
         // As `check::read` found it, changed in one thing.
         let folder = &source.folder;
         let again = |text: &str, sets: &[String]| {
+            let stated = |set: &String| set.trim_start().starts_with("fastener");
+            if text != source.text && self.sets.iter().any(stated) {
+                return Err("an override states the fastener: write it into the file".to_owned());
+            }
             let sets = [self.sets.as_slice(), sets].concat();
             let files = |name: &str| input::table(folder, name);
             joint::read_with_files(text, &sets, &files).map_err(|told| told.first())

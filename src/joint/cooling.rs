@@ -120,7 +120,8 @@ fn radiates_among(parts: &[CooledPart], records: &[Record], collector: &mut Coll
             )
             .expecting("expected a film without a spread")
             .help(
-                "the temperature of the sink surface follows from the balance of both and is one number: state each                  end of the film in a file of its own, or a [[variant]]",
+                "the temperature of the sink surface follows from the balance of both and is one number: state each \
+                 end of the film in a file of its own, or a [[variant]]",
             )
         });
     }

@@ -175,7 +175,7 @@ fn row(search: &Search, found: Found) -> Row {
     let target = &search.target;
     let verdict = match (&solution, &band) {
         (None, _) => Verdict::Screened,
-        (Some(Err(failure)), _) | (_, Some(Err(failure))) => Verdict::Failed(failure.clone()),
+        (Some(Err(failure)), _) => Verdict::Failed(failure.clone()),
         (Some(Ok(solution)), band) => judged(target, solution, band.as_ref()),
     };
     let solution = solution.and_then(Result::ok);
@@ -201,7 +201,8 @@ fn row(search: &Search, found: Found) -> Row {
     }
 }
 
-/// The verdict of every case together: at the unfavourable end of the band where one was drawn.
+/// The verdict of every case together: at the unfavourable end of the band where one was drawn, by
+/// force where it could not be.
 fn judged(target: &Target, solution: &Solution, band: Option<&Banded>) -> Verdict {
     let [nominal, by_force] = solution.meets(target);
     let drawn = band.and_then(|band| band.as_ref().ok());

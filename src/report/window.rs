@@ -249,7 +249,8 @@ fn opening(window: &TorqueWindow) -> Vec<String> {
         ));
     } else if window.heat.as_ref().is_some_and(Vec::is_empty) && !window.plates_fail {
         lines.push(
-            "not tried: finer or flatter faces, thicker plates; the drivers of `estimate` tell which"
+            "not tried: what is not named above, such as finer or flatter faces and thicker plates; the \
+             drivers of `estimate` tell which"
                 .to_owned(),
         );
     }

@@ -83,9 +83,14 @@ fn otherwise(sought: &Sought<'_>, joint: &Joint) -> Result<(Option<Range>, Judge
         return Ok((None, judged));
     }
     if sought.options.chain.draws > 0 {
-        chain.expect_torques((sought.case, group), ends)?;
+        if let Err(failure) = chain.expect_torques((sought.case, group), ends) {
+            return refused(failure);
+        }
     }
-    Ok((within(&changed, room, &looks)?, judged))
+    match within(&changed, room, &looks) {
+        Ok(found) => Ok((found, judged)),
+        Err(failure) => refused(failure),
+    }
 }
 
 /// Changes of the bolt that leave plates and seats as they are, each tried alone.

@@ -167,6 +167,15 @@ impl<F: Form> Operator<F> {
         self.matrix.held[axis].extend(unknowns);
     }
 
+    /// Puts a vector to zero where unknowns are held.
+    pub fn clear_held(&self, values: &mut [f64]) {
+        for column in 0..self.plan.columns() {
+            for unknown in self.matrix.held_at(column) {
+                values[column * self.matrix.stride + unknown] = 0.0;
+            }
+        }
+    }
+
     /// Both unknowns that a tie joins; twice the same where it holds to the ground.
     pub fn ends(&self, tie: usize) -> [usize; 2] {
         let coupling = &self.matrix.couplings[tie];

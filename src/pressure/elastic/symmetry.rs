@@ -17,8 +17,10 @@ const SAMPLES: f64 = 2.0 / 256.0;
 /// Gaps that differ by this are the same, m.
 const GAP: f64 = 1e-12;
 
-/// Where a mirror may stand across x and across y: the middle of everything, where bodies and bolts
-/// mirror about it; none where they do not.
+/// Where a mirror may stand across x and across y: the middle of everything, where the outlines of
+/// bodies and the places of bolts mirror about it; none where they do not.
+///
+/// Forces do not count here: grids are laid by it, and all fields of a joint share one.
 pub(super) fn middles(problem: &Problem) -> [Option<f64>; 2] {
     [0, 1].map(|axis| {
         let ends = problem.bodies.iter().map(|body| body.bounds[axis]);
@@ -50,11 +52,24 @@ fn has_image(problem: &Problem, bolt: &Bolt, (axis, middle): (usize, f64), near:
         && problem.bolts.iter().any(|other| {
             (other.at[0] - image[0]).abs() <= near
                 && (other.at[1] - image[1]).abs() <= near
-                && (other.force - bolt.force).abs() <= SAME * bolt.force
                 && other.head == bolt.head
                 && other.end == bolt.end
                 && other.hole_radii == bolt.hole_radii
         })
+}
+
+/// Whether every bolt has the force of the one at its image.
+fn forces_mirror(problem: &Problem, (axis, middle): (usize, f64)) -> bool {
+    problem.bolts.iter().all(|bolt| {
+        let mut image = bolt.at;
+        image[axis] = 2.0 * middle - image[axis];
+        let off = |other: &Bolt| (other.at[0] - image[0]).hypot(other.at[1] - image[1]);
+        let nearest = problem
+            .bolts
+            .iter()
+            .min_by(|a, b| off(a).total_cmp(&off(b)));
+        nearest.is_some_and(|other| (other.force - bolt.force).abs() <= SAME * bolt.force)
+    })
 }
 
 /// Largest radius that belongs to a bolt, m.
@@ -71,12 +86,15 @@ fn reach(bolt: &Bolt) -> f64 {
 ///
 /// Bodies, holes, feet and inlays are compared cell by cell, initial gaps column by column.
 pub(super) fn mirror(problem: &Problem, mesh: &Mesh) -> Option<Mirror> {
-    let wanted = middles(problem).map(|middle| middle.is_some());
+    let middles = middles(problem);
     let alone = [[true, false], [false, true]];
     let holds = |wanted: [bool; 2]| {
         Mirror::of(&mesh.plan, wanted).filter(|mirror| mirrors(problem, mesh, mirror))
     };
-    let along = [0, 1].map(|axis| wanted[axis] && holds(alone[axis]).is_some());
+    let along = [0, 1].map(|axis| {
+        middles[axis].is_some_and(|middle| forces_mirror(problem, (axis, middle)))
+            && holds(alone[axis]).is_some()
+    });
     Mirror::of(&mesh.plan, along)
 }
 
@@ -128,7 +146,11 @@ pub(super) fn solve(
     let stride = system.load.len() / on_part.plan.columns();
     let previous = match start {
         Start::Field(field) if field.mesh.plan == *mirror.whole() => {
-            kept(field, (mirror, &on_part), stride)
+            // One that did not mirror has moved across the line, where nothing moves now.
+            kept(field, (mirror, &on_part), stride).map(|mut kept| {
+                system.operator.clear_held(&mut kept.state.displacement);
+                kept
+            })
         }
         _ => None,
     };
@@ -263,11 +285,12 @@ mod tests {
         bolts
     }
 
-    /// Solves two plates with a rounded hole between the bolts; the field with and without mirrors.
+    /// Solves two plates with holes between the bolts; the field with and without mirrors.
     fn both(
         bolts: &[Bolt],
         (head, faces): (Head, Faces),
         gap: &(dyn Fn([f64; 2]) -> f64 + Sync),
+        from: Option<&Field>,
     ) -> (Option<Mirror>, Field, Field) {
         let cover = |[x, y]: [f64; 2]| {
             (0.0..=60e-3).contains(&x)
@@ -304,7 +327,10 @@ mod tests {
         let mirror = mirror(&problem, &mesh);
         let system = System::new(&problem, &mesh, None).unwrap();
         let whole = newton::solve(&problem, (mesh, system), &Start::Bolts).unwrap();
-        let part = solve(&problem).unwrap();
+        let part = match from {
+            Some(field) => solve_from(&problem, field).unwrap(),
+            None => solve(&problem).unwrap(),
+        };
         // A field spread over the whole is a start for the part again.
         let again = solve_from(&problem, &part).unwrap();
         assert!(again.health.newton_steps <= 2, "{:?}", again.health);
@@ -367,7 +393,7 @@ mod tests {
             (thread, Head::Rigid, Faces::Frictionless),
             (nut, Head::Rigid, Faces::Stuck),
         ] {
-            let (mirror, part, whole) = both(&bolts(end), (head, faces), &|_| 0.0);
+            let (mirror, part, whole) = both(&bolts(end), (head, faces), &|_| 0.0, None);
             assert_eq!(mirror.map(|mirror| mirror.across()), Some([true, true]));
             // A fourth of the columns and half of those on the lines.
             assert!(part.health.unknowns < whole.health.unknowns * 3 / 10);
@@ -383,18 +409,24 @@ mod tests {
         });
         let plain = (Head::Uniform, Faces::Frictionless);
         // A wedge along y, a few micrometres as faces have them.
-        let (mirror, part, whole) = both(&bolts(nut), plain, &|[_, y]| 1e-4 * y);
+        let (mirror, part, whole) = both(&bolts(nut), plain, &|[_, y]| 1e-4 * y, None);
         assert_eq!(mirror.map(|mirror| mirror.across()), Some([true, false]));
         compare(&part, &whole);
+        // A start for a joint that mirrors, though it moved across the line itself.
+        let (mirror, even, whole) = both(&bolts(nut), plain, &|_| 0.0, Some(&part));
+        assert_eq!(mirror.map(|mirror| mirror.across()), Some([true, true]));
+        compare(&even, &whole);
         let mut uneven = bolts(nut);
         uneven[0].force = 2100.0;
-        let (mirror, ..) = both(&uneven, plain, &|_| 0.0);
+        let (mirror, field, _) = both(&uneven, plain, &|_| 0.0, None);
         assert_eq!(mirror, None);
+        // Whatever the forces, all fields of a joint share one grid.
+        assert_eq!(field.mesh, part.mesh);
         let mut shifted = bolts(nut);
         for bolt in &mut shifted {
             bolt.at[0] += 1e-3;
         }
-        let (mirror, ..) = both(&shifted, plain, &|_| 0.0);
+        let (mirror, ..) = both(&shifted, plain, &|_| 0.0, None);
         assert_eq!(mirror.map(|mirror| mirror.across()), Some([false, true]));
     }
 }

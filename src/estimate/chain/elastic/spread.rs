@@ -196,10 +196,8 @@ impl ElasticModel {
         } else {
             self.bounds(chain, nominal, range)?
         };
-        let remade = match known {
-            Some(known) => known.remade.clone(),
-            None => self.remade_answers(chain, (case, nominal), (range, &response))?,
-        };
+        // Its forces are counted from the nominal one of its case, so that none serves another.
+        let remade = self.remade_answers(chain, (case, nominal), (range, &response))?;
         if let Some(remade) = &remade {
             response.error = worse(response.error, remade.error);
         }
