@@ -82,10 +82,10 @@ fn otherwise(sought: &Sought<'_>, joint: &Joint) -> Result<(Option<Range>, Judge
     if !met {
         return Ok((None, judged));
     }
-    if sought.options.chain.draws > 0 {
-        if let Err(failure) = chain.expect_torques((sought.case, group), ends) {
-            return refused(failure);
-        }
+    if sought.options.chain.draws > 0
+        && let Err(failure) = chain.expect_torques((sought.case, group), ends)
+    {
+        return refused(failure);
     }
     match within(&changed, room, &looks) {
         Ok(found) => Ok((found, judged)),
