@@ -111,7 +111,7 @@ struct Entry {
 }
 
 #[derive(Template)]
-#[template(path = "page.html")]
+#[template(config = "src/report/page/askama.toml", path = "page.html")]
 struct Page<'a> {
     title: &'a str,
     style: &'static str,

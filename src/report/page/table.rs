@@ -26,7 +26,7 @@ pub(super) struct Row {
 
 /// A table.
 #[derive(Clone, Debug, Default, PartialEq, Eq, Template)]
-#[template(path = "table.html")]
+#[template(config = "src/report/page/askama.toml", path = "table.html")]
 pub(super) struct Table {
     /// Its name in the page, for what reads it; empty where nothing does.
     pub(super) id: &'static str,
