@@ -37,7 +37,7 @@ const EXPECTED: f64 = 0.6;
 const SOFT_MOTIONS: f64 = 1e-2;
 /// Steps after which columns may go on changing that press next to nothing, and how much that is: their
 /// gap or closure over the deepest closure, which is their pressure over the peak.
-const LONG: usize = 20;
+const LONG: usize = 100;
 const NEXT_TO_NOTHING: f64 = 1e-4;
 /// Changes of a column in accurate solutions after which stuck faces slide there.
 const WAVERING: u8 = 3;
