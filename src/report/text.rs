@@ -47,7 +47,7 @@ pub fn estimate_at(estimate: &Estimate, detail: Detail) -> String {
     let mut parts = vec![heading(estimate)];
     if let Some(case) = estimate.cases.first() {
         parts.push(bolts(case, detail));
-        parts.push(thermal::results(case) + &thermal::worst(estimate, case));
+        parts.push(thermal::results(estimate, case) + &thermal::worst(estimate, case));
         parts.push(thermal::verdict(estimate, case) + &temperatures::told(estimate, case));
         if estimate.cases.len() > 1 {
             parts.push(thermal::cases(estimate));

@@ -15,7 +15,7 @@ use std::fmt::Write;
 pub(in crate::report) const ICE_POINT: f64 = 273.15;
 
 /// The results with their planes: contact only and with spreading, never one for the other.
-pub fn results(case: &CaseResult) -> String {
+pub fn results(estimate: &Estimate, case: &CaseResult) -> String {
     let results = &case.results;
     let rows: Vec<Vec<String>> = [
         (
@@ -46,9 +46,14 @@ pub fn results(case: &CaseResult) -> String {
     })
     .collect();
     let right = Side::Right;
+    let heading = if estimate.cases.len() > 1 {
+        format!("thermal result\n{} case", case.name)
+    } else {
+        "thermal result".to_owned()
+    };
     let mut text = aligned(
         &[
-            ("thermal result", Side::Left),
+            (heading.as_str(), Side::Left),
             ("K/W\nlow", right),
             ("K/W\nnominal", right),
             ("K/W\nhigh", right),
@@ -106,11 +111,21 @@ pub fn worst(estimate: &Estimate, case: &CaseResult) -> String {
         told("source to sink", worst.source_to_sink),
     ];
     let line = format!(
-        "worst cases K/W, every input at its end (3 sigma where it has none), bolts {}: {}",
+        "worst cases K/W{}, every input at its end (3 sigma where it has none), bolts {}: {}",
+        of_case(estimate, case),
         estimate.bolts_scatter,
         all.join("; ")
     );
     format!("{}\n", wrapped(&line, WIDTH, 2))
+}
+
+/// Which case is spoken of, where there are several.
+fn of_case(estimate: &Estimate, case: &CaseResult) -> String {
+    if estimate.cases.len() > 1 {
+        format!(", {} case", case.name)
+    } else {
+        String::new()
+    }
 }
 
 /// The conductances per area and per bolt, for those who must compare.
@@ -157,7 +172,8 @@ pub fn verdict(estimate: &Estimate, case: &CaseResult) -> String {
     if let Some(rise) = case.rise {
         let _ = write!(
             text,
-            "rise above the sink surface at {} W: {} K; hottest point {} K; across the faces {} K",
+            "rise above the sink surface{} at {} W: {} K; hottest point {} K; across the faces {} K",
+            of_case(estimate, case),
             optional(estimate.heat),
             spread(&rise.source, 1.0).replace("  ", " "),
             four(rise.hottest.nominal),
@@ -196,7 +212,7 @@ pub fn verdict(estimate: &Estimate, case: &CaseResult) -> String {
 /// The requirement and how the joint stands to it.
 pub(in crate::report) fn required(requirement: &RequirementResult, draws: u32) -> String {
     let (quantity, unit) = match requirement.kind {
-        RequirementKind::Rise => ("rise".to_owned(), "K"),
+        RequirementKind::Rise => ("rise above the sink surface".to_owned(), "K"),
         RequirementKind::HottestRise => ("rise of the hottest point".to_owned(), "K"),
         RequirementKind::InterfaceDrop => ("drop across the faces".to_owned(), "K"),
         RequirementKind::Resistance(plane) => (format!("resistance {}", plane_name(plane)), "K/W"),
@@ -262,6 +278,14 @@ pub fn cases(estimate: &Estimate) -> String {
             spread(&case.results.source_to_sink.resistance, 1.0)
         }),
     ];
+    if columns.iter().any(|case| case.worst.is_some()) {
+        rows.push(row("worst cases, K/W", &|case| {
+            case.worst.map_or_else(String::new, |worst| {
+                let [least, most] = worst.source_to_sink;
+                format!("{} to {}", four(least), four(most))
+            })
+        }));
+    }
     if columns.iter().any(|case| case.rise.is_some()) {
         rows.push(row("rise, K", &|case| {
             case.rise
