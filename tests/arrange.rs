@@ -71,7 +71,6 @@ fn json(folder: &TempDir, arguments: &[&str]) -> serde_json::Value {
 #[test]
 fn each_layout_of_the_front_is_a_joint_that_estimate_reproduces() {
     let folder = folder();
-    fs::create_dir(folder.path().join("out")).expect("it can be made");
     let found = json(&folder, &["--write", "out", "--draw", "layouts.svg"]);
     assert!(found["complete"] == true, "{found}");
     let rows = found["rows"].as_array().expect("there are rows");
@@ -140,7 +139,6 @@ fn estimated(folder: &TempDir, name: &str) -> serde_json::Value {
 #[test]
 fn every_case_and_every_other_group_counts_up_to_the_end_of_the_band() {
     let folder = folder();
-    fs::create_dir(folder.path().join("out")).expect("it can be made");
     let joint = JOINT
         .replace(
             "temperature = \"20 °C\"",
@@ -230,6 +228,101 @@ fn threads_change_no_digit() {
     assert_eq!(
         json(&folder, &["--jobs", "1"]),
         json(&folder, &["--jobs", "3"])
+    );
+}
+
+/// The same layouts in a batch as alone, names that tell the joint, and a table of all; a file at fault
+/// stops none of the others.
+#[test]
+fn many_joints_are_searched_as_each_alone() {
+    let folder = folder();
+    let thicker = JOINT.replace("thickness = \"5 mm\"", "thickness = \"6 mm\"");
+    fs::write(folder.path().join("thick.toml"), thicker).expect("it can be written");
+    fs::write(folder.path().join("bad.toml"), "[service]\n").expect("it can be written");
+    let alone = json(&folder, &[]);
+    let assert = ringsum(&folder)
+        .args(["arrange", "lid.toml", "bad.toml", "thick.toml"])
+        .args([
+            "--solve", "2", "--jobs", "2", "--out", "found", "--write", "layouts",
+        ])
+        .assert()
+        .code(1);
+    let told = text(&assert.get_output().stderr);
+    assert!(
+        told.contains("bad.toml") && told.contains("layouts.csv"),
+        "{told}"
+    );
+    let read = |name: &str| fs::read_to_string(folder.path().join(name)).expect("it was written");
+    let found: serde_json::Value = serde_json::from_str(&read("found/lid.json")).expect("JSON");
+    assert_eq!(found, alone);
+    let front = |name: &str| {
+        let found: serde_json::Value = serde_json::from_str(&read(name)).expect("JSON");
+        let rows = found["rows"].as_array().expect("rows").clone();
+        (
+            rows.iter().filter(|row| row["front"] == true).count(),
+            rows.len(),
+        )
+    };
+    let table = read("found/layouts.csv");
+    for (joint, others) in [("lid", "thick"), ("thick", "lid")] {
+        let (on_front, rows) = front(&format!("found/{joint}.json"));
+        let lines = table
+            .lines()
+            .filter(|line| line.starts_with(&format!("{joint}.toml,done")));
+        assert_eq!(lines.count(), rows, "{table}");
+        let names = fs::read_dir(folder.path().join("layouts")).expect("it was made");
+        let names = names.map(|entry| entry.expect("readable").file_name());
+        let of_joint = names.filter(|name| {
+            let name = name.to_string_lossy();
+            name.starts_with(&format!("{joint}-")) && !name.starts_with(&format!("{others}-"))
+        });
+        assert_eq!(of_joint.count(), on_front);
+    }
+    assert!(table.contains("bad.toml,faulty,"), "{table}");
+    // One checkpoint keeps one search.
+    ringsum(&folder)
+        .args([
+            "arrange",
+            "lid.toml",
+            "thick.toml",
+            "--checkpoint",
+            "state.json",
+        ])
+        .assert()
+        .code(2);
+}
+
+/// A head over a heated zone is told, and none once the zone is kept free.
+#[test]
+fn heads_over_a_part_are_told_of() {
+    let folder = folder();
+    let zone = "centre = [\"25 mm\", \"20 mm\"], size = [\"44 mm\", \"34 mm\"]";
+    let plate = "finish = \"milled\"\n\n[[plate]]";
+    let heated = format!("finish = \"milled\"\nheated = {{ {zone} }}\n\n[[plate]]");
+    let joint = JOINT.replacen(plate, &heated, 1);
+    fs::write(folder.path().join("lid.toml"), &joint).expect("it can be written");
+    let found = json(&folder, &[]);
+    let rows = found["rows"].as_array().expect("rows");
+    // The corners of the zone are within a head of every place that keeps its edge distance.
+    assert!(
+        rows.iter()
+            .all(|row| row["heads_over_heat"] == row["bolts"]),
+        "{found}"
+    );
+    let told = ringsum(&folder)
+        .args(["arrange", "lid.toml", "--solve", "1"])
+        .assert()
+        .code(0);
+    let told = text(&told.get_output().stdout);
+    assert!(told.contains("heads reach over a heated zone"), "{told}");
+    assert!(told.contains("arrange.keep_out"), "{told}");
+    // A heated face is no part.
+    fs::write(folder.path().join("lid.toml"), JOINT).expect("it can be written");
+    let found = json(&folder, &[]);
+    let rows = found["rows"].as_array().expect("rows");
+    assert!(
+        rows.iter().all(|row| row["heads_over_heat"] == 0),
+        "{found}"
     );
 }
 

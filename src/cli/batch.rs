@@ -21,7 +21,7 @@ const STACK: usize = 8 << 20;
 /// How a command goes through many files.
 #[derive(Clone, Debug, Args)]
 pub struct Batch {
-    /// Joints worked on at once, each on one core; without it one after the other on all cores
+    /// Cores to use, each for a joint of its own; without it one joint after the other on all cores
     #[arg(long, value_name = "N", value_parser = clap::value_parser!(u16).range(1..=1024))]
     jobs: Option<u16>,
     /// Take the K-th of N parts of the files: every N-th in the order of their sorted paths
@@ -121,8 +121,9 @@ fn settled(done: Result<Outcome, Trouble>, console: &mut Console) -> Result<Outc
     }
 }
 
-/// Every worker has a pool of one thread, in which also the parallel parts of a solution run, so that
-/// no more threads compute than there are jobs; the thread count changes no digit.
+/// Every worker has a pool of its own, in which also the parallel parts of a solution run: of one
+/// thread, or of more where there are fewer files than jobs, so that no more threads compute than
+/// there are jobs; the thread count changes no digit.
 fn at_once(
     files: &[PathBuf],
     (jobs, console): (usize, &mut Console),
@@ -130,9 +131,10 @@ fn at_once(
 ) -> Result<Vec<Outcome>, Trouble> {
     let workers = jobs.min(files.len());
     let pools = (0..workers)
-        .map(|_| {
+        .map(|index| {
+            let share = jobs / workers + usize::from(index < jobs % workers);
             rayon::ThreadPoolBuilder::new()
-                .num_threads(1)
+                .num_threads(share)
                 .stack_size(STACK)
                 .build()
         })

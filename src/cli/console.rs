@@ -79,10 +79,12 @@ impl Outcome {
         }
     }
 
-    /// The outcome of a batch. One file keeps its own; of several, any failure or fault is a failure.
+    /// The outcome of a batch. One file keeps its own; of several, one that was stopped tells so, and
+    /// any failure or fault is a failure.
     pub fn of_batch(outcomes: &[Self]) -> Self {
         match outcomes {
             [single] => *single,
+            several if several.contains(&Self::Interrupted) => Self::Interrupted,
             several
                 if several
                     .iter()

@@ -2,11 +2,14 @@
 
 use crate::{
     cli::{
+        answers,
+        batch::Batch,
         chain, check,
         console::{Console, Layout, Outcome, Trouble},
         field::{self, Field},
         input::{self, Source},
-        output::{self, Existing, Target},
+        output::{Existing, Target},
+        results,
     },
     diagnostic::{
         self, Caution, Colour, Fault,
@@ -47,8 +50,9 @@ Examples:
 #[derive(Debug, Args)]
 #[command(after_help = EXAMPLES)]
 pub struct Fit {
-    /// Table of readings, after a joint file where --unknown asks for one; - reads standard input
-    #[arg(required_unless_present = "unknown", num_args = 1..=2, value_name = "FILE")]
+    /// Tables of readings, each fitted alone; after a joint file where --unknown asks for one; - reads
+    /// standard input
+    #[arg(required_unless_present = "unknown", value_name = "FILE")]
     files: Vec<PathBuf>,
     /// What is laid through the readings
     #[arg(
@@ -117,7 +121,9 @@ pub struct Fit {
     /// Override a field of the joint: --set 'plate.box.thickness="6 mm"'
     #[arg(long = "set", value_name = "KEY=VALUE", requires = "unknown")]
     sets: Vec<String>,
-    /// Write the `[measured]` block to a file
+    #[command(flatten)]
+    batch: Batch,
+    /// Write the `[measured]` block to a file; of several tables the blocks to a folder
     #[arg(long, value_name = "FILE", conflicts_with = "unknown")]
     out: Option<PathBuf>,
     /// Draw readings and law, or the likelihood, to a file that ends in .svg or .png
@@ -126,7 +132,7 @@ pub struct Fit {
     /// Replace files that exist
     #[arg(long)]
     force: bool,
-    /// Print JSON, in SI
+    /// Print one JSON object per table, in SI
     #[arg(long)]
     json: bool,
     /// Exit with 3 when a caution speaks of this fit
@@ -178,46 +184,85 @@ fn draws(text: &str) -> Result<u32, String> {
 }
 
 impl Fit {
-    /// Fits; checks every file to be written before computing.
+    /// Fits every table; checks every file to be written before computing.
     pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
         if self.unknown.as_deref() == Some("list") {
             console.result(&words())?;
             return Ok(Outcome::Done);
         }
         input::stdin_at_most_once(&self.files)?;
-        let figure = match &self.draw {
-            Some(path) => Some((output::format(path)?, self.target(path)?)),
-            None => None,
-        };
-        let out = match &self.out {
-            Some(path) => Some(self.target(path)?),
-            None => None,
-        };
-        match (&self.unknown, self.files.as_slice()) {
-            (None, [points]) => self.law(points, (out, figure), console),
-            (Some(asked), [joint, points]) => self.unknown(asked, [joint, points], figure, console),
-            (None, _) => Err(Trouble::usage(
-                "a joint file is named, but no unknown of it",
+        let tables = self.batch.files(self.tables()?);
+        let existing = Existing::from_force(self.force);
+        let figure = answers::figure(self.draw.as_deref(), &tables, existing)?;
+        if tables.len() > 1 && !self.without.is_empty() {
+            return Err(Trouble::usage(
                 format!(
-                    "say what is unknown, `--unknown roughness`; one of {}",
-                    listed()
+                    "--without counts the lines of one table, and {} are named",
+                    tables.len()
                 ),
-            )),
+                "fit the table with a line to leave out alone",
+            ));
+        }
+        let blocks = self.blocks(&tables, existing)?;
+        self.batch.run(&tables, console, &|index, path, console| {
+            if tables.len() > 1 && !self.json {
+                let gap = if index > 0 { "\n" } else { "" };
+                console.result(&format!("{gap}{}:\n", input::name(path)))?;
+            }
+            match &self.unknown {
+                None => self.law(path, (blocks.get(index), figure.as_ref()), console),
+                Some(asked) => {
+                    let files = [self.files[0].as_path(), path];
+                    self.unknown(asked, files, figure.as_ref(), console)
+                }
+            }
+        })
+    }
+
+    /// The tables among the files; where an unknown is asked for, a joint comes before them.
+    fn tables(&self) -> Result<&[PathBuf], Trouble> {
+        match (&self.unknown, self.files.as_slice()) {
+            (Some(_), [_joint, tables @ ..]) if !tables.is_empty() => Ok(tables),
             (Some(_), _) => Err(Trouble::usage(
                 "an unknown is asked for, but no joint",
                 "name the joint file before the table: `ringsum fit joint.toml points.csv --unknown roughness`",
             )),
+            (None, [first, _, ..]) if first.extension().is_some_and(|ending| ending == "toml") => {
+                Err(Trouble::usage(
+                    "a joint file is named, but no unknown of it",
+                    format!(
+                        "say what is unknown, `--unknown roughness`; one of {}",
+                        listed()
+                    ),
+                ))
+            }
+            (None, tables) => Ok(tables),
         }
     }
 
-    fn target(&self, path: &Path) -> Result<Target, Trouble> {
-        Target::new(path, Existing::from_force(self.force))
+    /// Where the blocks are written: into a file, or of several tables into a folder.
+    fn blocks(&self, tables: &[PathBuf], existing: Existing) -> Result<Vec<Target>, Trouble> {
+        match (&self.out, tables) {
+            (None, _) => Ok(Vec::new()),
+            (Some(file), [_]) => Ok(vec![Target::new(file, existing)?]),
+            (Some(folder), _) => {
+                results::apart(tables, ".toml")?;
+                results::make(folder)?;
+                let name = |path: &PathBuf| format!("{}.toml", results::stem(path));
+                let target = |path| Target::new(&folder.join(name(path)), existing);
+                tables.iter().map(target).collect()
+            }
+        }
+    }
+
+    fn layout(&self) -> Layout {
+        Layout::of_batch(self.files.len() - usize::from(self.unknown.is_some()))
     }
 
     fn law(
         &self,
         points: &Path,
-        (out, figure): (Option<Target>, Option<(Format, Target)>),
+        (out, figure): (Option<&Target>, Option<&(Format, Target)>),
         console: &mut Console,
     ) -> Result<Outcome, Trouble> {
         let (source, readings) = self.readings(points, console)?;
@@ -243,12 +288,12 @@ impl Fit {
                 title: stem(&source.name),
                 series: series.clone(),
             };
-            draw((&Drawing::Fit(Box::new(plot)), format), &target, console)?;
+            draw((&Drawing::Fit(Box::new(plot)), *format), target, console)?;
         }
         if self.json {
             console.json(
                 &fit::series_json(&series, (&source.name, &block)),
-                Layout::Indented,
+                self.layout(),
             )?;
         } else {
             console.result(&text::painted(&fit::series(&series, &source.name)))?;
@@ -266,7 +311,7 @@ impl Fit {
         &self,
         asked: &str,
         [joint, points]: [&Path; 2],
-        figure: Option<(Format, Target)>,
+        figure: Option<&(Format, Target)>,
         console: &mut Console,
     ) -> Result<Outcome, Trouble> {
         let choice = self.field.choice()?;
@@ -316,8 +361,8 @@ impl Fit {
                 answer: answer.clone(),
             };
             draw(
-                (&Drawing::Profile(Box::new(plot)), format),
-                &target,
+                (&Drawing::Profile(Box::new(plot)), *format),
+                target,
                 console,
             )?;
         }
@@ -334,7 +379,7 @@ impl Fit {
         if self.json {
             console.json(
                 &fit::answer_json(question, answer, &source.name),
-                Layout::Indented,
+                self.layout(),
             )?;
         } else {
             console.result(&text::painted(&fit::answer(question, answer, &source.name)))?;
@@ -349,7 +394,7 @@ impl Fit {
             Ok(all) => all,
             Err(faults) => {
                 if self.json {
-                    console.json(&refused_json(&source, &faults), Layout::Indented)?;
+                    console.json(&refused_json(&source, &faults), self.layout())?;
                 }
                 return Err(refused(&source, &faults));
             }

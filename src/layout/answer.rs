@@ -2,9 +2,10 @@
 
 use crate::{
     estimate,
-    joint::{Family, Joint, Tightening},
+    joint::{Family, Joint, Tightening, Zone},
     layout::{
-        Goal, Search, Solution, State, Target,
+        Goal, Search, Size, Solution, State, Target,
+        constraints::distance,
         search::{Banded, Found},
     },
 };
@@ -43,6 +44,8 @@ pub struct Row {
     pub places: Vec<[f64; 2]>,
     /// Mass of the fasteners, kg.
     pub mass: f64,
+    /// How many heads reach over a heated zone, where a part may stand.
+    pub over_heat: usize,
     /// The judged quantity by the screening, K/W.
     pub screened: f64,
     /// What the elastic field says.
@@ -189,6 +192,7 @@ fn row(search: &Search, found: Found) -> Row {
         family: layout.family,
         refined: layout.refined,
         mass: size.mass * layout.places.len() as f64,
+        over_heat: over_heat(size, &layout.places),
         places: layout.places,
         screened: layout.value,
         case: solution
@@ -199,6 +203,21 @@ fn row(search: &Search, found: Found) -> Row {
         verdict,
         front: false,
     }
+}
+
+/// How many heads reach over a heated zone of the plate they sit on; a whole heated face hides no part.
+fn over_heat(size: &Size, places: &[[f64; 2]]) -> usize {
+    let fastener = size.fastener();
+    if fastener.head_plate != 0 {
+        return 0;
+    }
+    let zones = size.joint.source.zones();
+    let head = fastener.head_seat.outer_radius;
+    let over = |place: &&[f64; 2]| {
+        let mut zones = zones.iter().filter(|(zone, _)| *zone != Zone::Face);
+        zones.any(|(zone, _)| distance(*zone, **place) < head)
+    };
+    places.iter().filter(over).count()
 }
 
 /// The verdict of every case together: at the unfavourable end of the band where one was drawn, by

@@ -160,7 +160,7 @@ fn apart(one: [f64; 2], other: [f64; 2]) -> f64 {
 }
 
 /// Distance of a place from a zone, m; below zero inside.
-fn distance(zone: Zone, place: [f64; 2]) -> f64 {
+pub(super) fn distance(zone: Zone, place: [f64; 2]) -> f64 {
     match zone {
         Zone::Face => f64::NEG_INFINITY,
         Zone::Disc { centre, radius } => apart(centre, place) - radius,

@@ -74,6 +74,23 @@ pub fn answer(answer: &Answer, defaults: &Defaults) -> String {
         );
         let _ = writeln!(text, "note     {}", wrapped(&line, WIDTH - 9, 9));
     }
+    let over: Vec<String> = answer
+        .rows
+        .iter()
+        .filter(|row| row.front && row.over_heat > 0)
+        .map(|row| {
+            let [over, all] = [row.over_heat, row.places.len()];
+            format!("{over} of {all} {}, {}", plain(&row.label), pattern(row))
+        })
+        .collect();
+    if !over.is_empty() {
+        let line = format!(
+            "heads reach over a heated zone ({}); where a part stands there, state it under \
+             arrange.keep_out",
+            over.join("; ")
+        );
+        let _ = writeln!(text, "note     {}", wrapped(&line, WIDTH - 9, 9));
+    }
     if !answer.passed_over.is_empty() {
         let _ = writeln!(
             text,
@@ -259,6 +276,7 @@ fn row(answer: &Answer, row: &Row) -> Value {
         "pattern": row.family.name(),
         "moved": row.refined,
         "mass": row.mass,
+        "heads_over_heat": row.over_heat,
         "at": row.places,
         "screened": row.screened,
         "resistance": cases.as_ref().and_then(|cases| cases.get(row.case)),

@@ -1,9 +1,11 @@
 //! Results as rows of one table, for spreadsheets: SI, unrounded, comma separated (RFC 4180).
 
 mod drivers;
+mod layouts;
 mod torques;
 
 pub use drivers::{DRIVERS, drivers};
+pub use layouts::{LAYOUTS, layouts};
 pub use torques::{TORQUES, torques};
 
 use crate::{

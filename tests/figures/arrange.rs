@@ -16,6 +16,7 @@ fn row(bolts: usize, nominal: f64, verdict: Verdict) -> Row {
         places: (0..bolts)
             .map(|bolt| [0.01 + 0.008 * bolt as f64, 0.02])
             .collect(),
+        over_heat: 0,
         mass: 2.8e-3 * bolts as f64,
         screened: 1.05 * nominal,
         solution: Some(Solution {

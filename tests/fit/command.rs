@@ -70,6 +70,47 @@ fn nothing_is_overwritten_without_force() {
     run(&["--force"]).code(0);
 }
 
+/// Each table is fitted as alone, blocks go to a folder, one at fault stops none of the others.
+#[test]
+fn many_tables_are_fitted_each_alone() {
+    let folder = folder();
+    fs::write(
+        folder.path().join("other.csv"),
+        POINTS.replace("33000", "35000"),
+    )
+    .expect("written");
+    fs::write(folder.path().join("bad.csv"), "pressure [MPa]\n1\n").expect("written");
+    let files = ["fit", "rig.csv", "bad.csv", "other.csv"];
+    let run = |more: &[&str]| ringsum(folder.path()).args(files).args(more).assert();
+    let (out, err) = streams(&run(&["--out", "blocks", "--jobs", "2"]).code(1));
+    assert!(
+        out.contains("rig.csv:\n") && out.contains("other.csv:\n"),
+        "{out}"
+    );
+    assert!(err.contains("bad.csv:1:"), "{err}");
+    for name in ["rig", "other"] {
+        let alone = [
+            "fit",
+            &format!("{name}.csv"),
+            "--out",
+            &format!("{name}.toml"),
+        ];
+        ringsum(folder.path()).args(alone).assert().code(0);
+        let read = |path: String| fs::read_to_string(folder.path().join(path)).expect("written");
+        assert_eq!(
+            read(format!("blocks/{name}.toml")),
+            read(format!("{name}.toml"))
+        );
+    }
+    assert!(!folder.path().join("blocks/bad.toml").exists());
+    // What speaks of one table is asked of one.
+    for more in [&["--without", "2"][..], &["--draw", "fit.svg"]] {
+        run(more).code(2);
+    }
+    let (lines, _) = streams(&run(&["--json"]).code(1));
+    assert_eq!(lines.lines().count(), 3, "{lines}");
+}
+
 #[test]
 fn faults_of_a_table_are_told_at_their_places() {
     let folder = folder();
@@ -110,7 +151,7 @@ fn faults_of_a_table_are_told_at_their_places() {
             "no such branch",
         ),
         (&["fit", "rig.csv", "--unknown", "roughness"], "no joint"),
-        (&["fit", "rig.csv", "rig.csv"], "no unknown of it"),
+        (&["fit", "lid.toml", "rig.csv"], "no unknown of it"),
         (
             &[
                 "fit",
