@@ -101,7 +101,7 @@ fn ring_sum(rings: &Rings, cone: &Cone, law: &Curve, force: f64) -> f64 {
 
 /// The rings in contact of the first bolt, by their middle radius.
 fn rings(chain: &Chain, state: &ringsum::estimate::State, cone: &Cone) -> Rings {
-    let rows = chain.rings(0, state);
+    let rows = &chain.rings(0, state)[0];
     let inside = rows
         .iter()
         .filter(|row| row.radius[1] <= cone.contact_radius * (1.0 + 1e-12));

@@ -125,7 +125,7 @@ fn the_ring_sum_is_that_of_the_solved_field() {
         .sum();
     // The heat's grid has other lines than the contact, between which the pressure is straight.
     near(found, integrated, 2e-4, "the same law integrated");
-    let rings = chain.rings(0, &state);
+    let rings = &chain.rings(0, &state)[0];
     let last = rings.last().expect("rings");
     near(last.cumulative, integrated, 1e-5, "the table of rings");
     near(last.radius[1], RIM, 1e-12, "the last ring ends at the rim");
@@ -278,7 +278,7 @@ fn gas_helps_less_where_the_bolt_parts_the_plates() {
         added(&in_air)
     );
     let state = air.state(0, &Realisation::default()).expect("a state");
-    let rings = air.rings(0, &state);
+    let rings = &air.rings(0, &state)[0];
     let outside =
         |ring: &&ringsum::estimate::RingRow| ring.radius[0] > in_air.bolts[0].contact_radius;
     let outer: Vec<f64> = rings

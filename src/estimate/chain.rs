@@ -395,16 +395,14 @@ impl<'a> Chain<'a> {
         }
     }
 
-    /// The rings around one bolt in the first interface, from the hole outward.
-    pub fn rings(&self, bolt: usize, state: &State) -> Vec<RingRow> {
-        self.rings_in(0, bolt, state)
-    }
-
-    /// The same in any interface, counted from the warm side; the cone has one.
-    pub fn rings_in(&self, interface: usize, bolt: usize, state: &State) -> Vec<RingRow> {
+    /// The rings around every bolt, in file order and from the hole outward, in an interface counted
+    /// from the warm side; the cone has one.
+    pub fn rings(&self, interface: usize, state: &State) -> Vec<Vec<RingRow>> {
         match &self.model {
-            Model::Cone(model) => model.rings(&state.conditions, bolt),
-            Model::Elastic(model) => model.rings(self, (bolt, interface)),
+            Model::Cone(model) => (0..state.conditions.forces.len())
+                .map(|bolt| model.rings(&state.conditions, bolt))
+                .collect(),
+            Model::Elastic(model) => model.rings(self, interface),
         }
     }
 

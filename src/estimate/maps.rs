@@ -55,9 +55,7 @@ pub fn field_map(chain: &Chain, interface: usize, columns: usize) -> Result<Fiel
 /// The rings around every bolt in an interface, in file order.
 pub fn ring_tables(chain: &Chain, interface: usize) -> Result<Vec<Vec<RingRow>>, Failure> {
     let state = chain.state(0, &Realisation::default())?;
-    Ok((0..state.conditions.forces.len())
-        .map(|bolt| chain.rings_in(interface, bolt, &state))
-        .collect())
+    Ok(chain.rings(interface, &state))
 }
 
 /// The rectangle that holds all plates: left, lower, right, upper, m.

@@ -5,7 +5,7 @@ use crate::{
         chain::{Choice, Entry, Fields, Losses, Task, compared},
         console::Trouble,
     },
-    estimate::{self, Chain, Failure, FieldMap, Fineness, Options, TorqueSweep},
+    estimate::{self, Chain, Failure, FieldMap, Fineness, Options, TorqueSweep, Watch},
     joint::{Joint, Medium, Tightening},
     uncertainty::{
         self, Comparison, FEWEST_BASES, InMedium, Ranking, RankingOptions, SweepOptions, Target,
@@ -69,12 +69,12 @@ pub struct Pointed {
 /// One chain is solved for results, fields, drivers and media. The torque table takes the same chain
 /// where it is as coarse, or where all is asked for; else one of its own, which is fast.
 pub fn handed(task: &Task, versions: &[Entry], asked: &Asked) -> Result<Handed, Trouble> {
-    let chain = task.chain()?;
-    let nominal = Options {
-        draws: 0,
-        ..asked.options
+    let quick = match asked.effort {
+        Effort::Whole => task.choice,
+        Effort::Split => faster(task.choice),
     };
-    let mut found = task.watched(|| {
+    let chain = task.chain()?;
+    let along = || {
         let estimate = uncertainty::along(&chain, &asked.options)?;
         Ok(Handed {
             media: media(&chain, &estimate)?,
@@ -95,35 +95,40 @@ pub fn handed(task: &Task, versions: &[Entry], asked: &Asked) -> Result<Handed, 
             comparison: None,
             left_out: Vec::new(),
         })
-    })?;
-    let quick = match asked.effort {
-        Effort::Whole => task.choice,
-        Effort::Split => faster(task.choice),
     };
     let options = match asked.effort {
         Effort::Whole => asked.options,
-        Effort::Split => nominal,
+        Effort::Split => Options {
+            draws: 0,
+            ..asked.options
+        },
     };
-    if let Some(group) = by_torque(task.joint) {
-        let sweep = SweepOptions {
-            group,
-            from: None,
-            to: None,
-            steps: asked.torques,
-            confidence: uncertainty::CONFIDENCE,
-            chain: options,
-        };
-        let swept = if quick == task.choice {
-            uncertainty::sweep_along(&chain, &sweep)
-        } else {
-            Chain::of(task.joint, quick, &task.watch)
-                .and_then(|chain| uncertainty::sweep_along(&chain, &sweep))
-        };
+    let sweep = by_torque(task.joint).map(|group| SweepOptions {
+        group,
+        from: None,
+        to: None,
+        steps: asked.torques,
+        confidence: uncertainty::CONFIDENCE,
+        chain: options,
+    });
+    let (found, swept) = if quick == task.choice {
+        let found = task.watched(along);
+        let swept = sweep.map(|sweep| uncertainty::sweep_along(&chain, &sweep));
         task.watch.tell("");
-        match swept {
-            Ok(swept) => found.torque = Some(swept),
-            Err(why) => found.left_out.push(format!("Torque table: {why}.")),
-        }
+        (found, swept)
+    } else {
+        // A chain of its own knows nothing of the other, so both may be solved side by side.
+        let beside = |sweep: SweepOptions| {
+            let chain = Chain::of(task.joint, quick, &Watch::none())?;
+            uncertainty::sweep_along(&chain, &sweep)
+        };
+        rayon::join(|| task.watched(along), || sweep.map(beside))
+    };
+    let mut found = found?;
+    match swept {
+        Some(Ok(swept)) => found.torque = Some(swept),
+        Some(Err(why)) => found.left_out.push(format!("Torque table: {why}.")),
+        None => {}
     }
     if versions.len() > 1 {
         let asked = (&options, Losses::Left, Some(SMALL));

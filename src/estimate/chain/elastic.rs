@@ -282,10 +282,10 @@ impl ElasticModel {
             .map_or(f64::NAN, |(_, solved)| solved.footprint())
     }
 
-    /// The rings around a bolt in an interface, in the first case at nominal.
-    pub(super) fn rings(&self, chain: &Chain, (bolt, interface): (usize, usize)) -> Vec<RingRow> {
+    /// The rings around every bolt in an interface, in the first case at nominal.
+    pub(super) fn rings(&self, chain: &Chain, interface: usize) -> Vec<Vec<RingRow>> {
         self.closed(chain, 0)
-            .map_or_else(|_| Vec::new(), |(_, solved)| solved.rings(bolt, interface))
+            .map_or_else(|_| Vec::new(), |(_, solved)| solved.rings(interface))
     }
 
     /// The path of a case at one realisation.

@@ -166,8 +166,8 @@ pub(in crate::estimate::chain) trait Solved:
     /// How the faces of an interface meet at a point; none off the faying faces.
     fn met_at(&self, at: ([f64; 2], usize)) -> Option<Meeting>;
 
-    /// The rings around a bolt in an interface, from its hole outward.
-    fn rings(&self, bolt: usize, interface: usize) -> Vec<RingRow>;
+    /// The rings around every bolt in an interface, from its hole outward.
+    fn rings(&self, interface: usize) -> Vec<Vec<RingRow>>;
 
     /// The field as the reader gets it, with what becomes of flatness and the cone beside it.
     fn pressure(&self, flatness: Flatness, cone: Option<ConeBeside>) -> PressureResult;

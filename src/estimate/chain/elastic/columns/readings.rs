@@ -219,24 +219,25 @@ impl Solved for OnColumns {
     }
 
     /// Every sample of the faces counts to its nearest bolt.
-    fn rings(&self, bolt: usize, interface: usize) -> Vec<RingRow> {
+    fn rings(&self, interface: usize) -> Vec<Vec<RingRow>> {
         let field = &self.field;
-        let place = &field.bolts[bolt];
-        let edges = edges(
-            place.hole_radius,
-            place.bearing_radius,
-            far_end(field, bolt),
-        );
-        let mut sums = vec![Sum::default(); edges.len() - 1];
+        let around = field.bolts.iter().enumerate().map(|(bolt, place)| {
+            let edges = edges(
+                place.hole_radius,
+                place.bearing_radius,
+                far_end(field, bolt),
+            );
+            let sums = vec![Sum::default(); edges.len() - 1];
+            (edges, sums)
+        });
+        let mut around: Vec<(Vec<f64>, Vec<Sum>)> = around.collect();
         for (region, values) in parts((field, self.own(interface)), &self.faces[interface]) {
-            gather(field, region, |place, area, around| {
+            gather(field, region, |place, area, columns| {
                 let (owner, distance) = nearest(field, place);
-                if owner != bolt {
-                    return;
-                }
+                let (edges, sums) = &mut around[owner];
                 let ring = edges[1..edges.len() - 1].partition_point(|edge| *edge <= distance);
                 let at = |values: &[f64]| -> f64 {
-                    around
+                    columns
                         .iter()
                         .map(|(column, weight)| weight * values[*column])
                         .sum()
@@ -247,7 +248,10 @@ impl Solved for OnColumns {
                 sum.conductance += area * at(values.conductance);
             });
         }
-        rows(&edges, &sums)
+        around
+            .iter()
+            .map(|(edges, sums)| rows(edges, sums))
+            .collect()
     }
 }
 
