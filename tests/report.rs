@@ -94,6 +94,7 @@ fn case(name: &'static str, sink_temperature: f64) -> CaseResult {
         }),
         draw_error: None,
         sampling: None,
+        bent: None,
         footprint: 0.0192,
         rise: Some(Rise {
             source: band(4.4, 5.5, 8.8),
@@ -108,6 +109,7 @@ fn case(name: &'static str, sink_temperature: f64) -> CaseResult {
             limit: 5.0,
             bound: Limit::Most,
             value: 8.8,
+            bent: None,
             met: Met::No,
         }),
         drivers: vec![

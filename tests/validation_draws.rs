@@ -3,6 +3,8 @@
 
 #[path = "validation_draws/bands.rs"]
 mod bands;
+#[path = "validation_draws/bent.rs"]
+mod bent;
 #[path = "validation_draws/coverage.rs"]
 mod coverage;
 #[path = "validation_draws/plan.rs"]

@@ -6,15 +6,18 @@ use crate::{
         registry::{self, Gravity},
     },
     estimate::{
-        Temperatures, TorqueWindow,
+        Bent, Met, RequirementResult, Temperatures, TorqueWindow,
         cautions::{FLATNESS_DECIDES, GAP_IGNORED},
     },
-    joint::{Joint, Limit, RequirementKind},
+    joint::{Joint, Limit},
     preload::Shared,
     resistance::Path,
 };
 
 /// Low, nominal and high of one number; low and high are absent when no draws were made.
+///
+/// Where faces may be bent either way, low and high are the lowest and the highest of the quantiles of
+/// every way.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Band {
     /// 5 % quantile, or the unfavourable corner for forces.
@@ -287,32 +290,6 @@ pub struct Rise {
     pub coolant_drop_ends: Option<[f64; 2]>,
 }
 
-/// Whether a requirement is met.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
-pub enum Met {
-    /// Also at the unfavourable quantile.
-    Yes,
-    /// Not even at nominal.
-    No,
-    /// At nominal, but not at the unfavourable quantile, or no band was computed.
-    Uncertain,
-}
-
-/// A requirement and how the joint stands to it.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct RequirementResult {
-    /// The limited quantity.
-    pub kind: RequirementKind,
-    /// The limit, K, K/W or W/K.
-    pub limit: f64,
-    /// Side of the limit.
-    pub bound: Limit,
-    /// The value that is compared, unfavourable quantile where there is one.
-    pub value: f64,
-    /// The verdict.
-    pub met: Met,
-}
-
 /// One thermal case: a sink temperature and everything that follows from it.
 #[derive(Clone, Debug, PartialEq)]
 pub struct CaseResult {
@@ -343,6 +320,9 @@ pub struct CaseResult {
     pub draw_error: Option<f64>,
     /// How well the draws know the ends of the bands; none without draws, and with too few to tell.
     pub sampling: Option<Sampling>,
+    /// Low and high of source to sink by the way the faces are bent, K/W; none where they are not bent by
+    /// themselves, and without draws.
+    pub bent: Option<Bent>,
     /// Area of the faying faces, m²; in a stack that of the first interface.
     pub footprint: f64,
     /// Temperature rises, when heat is stated.

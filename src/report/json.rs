@@ -3,7 +3,7 @@
 use crate::{
     diagnostic::{Assumption, Caution},
     estimate::{
-        Band, BoltResult, CaseResult, Estimate, InterfaceResult, Met, PlaneResult,
+        Band, Bend, Bent, BoltResult, CaseResult, Estimate, InterfaceResult, Met, PlaneResult,
         RequirementResult, RingRow, Sampling, TorqueSweep, Worst,
     },
     joint::{Limit, Plane, RequirementKind},
@@ -108,6 +108,7 @@ fn case(case: &CaseResult) -> Map<String, Value> {
         ("numerical_error", json!(case.numerical_error)),
         ("draw_error", json!(case.draw_error)),
         ("sampling", case.sampling.as_ref().map_or(Value::Null, sampling)),
+        ("bent", case.bent.as_ref().map_or(Value::Null, bent)),
         ("rise", rise(case)),
         ("temperatures", temperatures::temperatures(case)),
         (
@@ -150,6 +151,14 @@ fn sampling(sampling: &Sampling) -> Value {
             json!({ "draws": point.draws, "low": point.low, "high": point.high })
         }).collect::<Vec<Value>>(),
     })
+}
+
+/// Ends by the way the faces are bent.
+fn bent(bent: &Bent) -> Value {
+    let ways = Bend::ALL.iter().zip(bent.0);
+    ways.map(|(way, [low, high])| (way.name().to_owned(), json!({ "low": low, "high": high })))
+        .collect::<Map<String, Value>>()
+        .into()
 }
 
 /// Resistances with every input at its unfavourable end, K/W.
@@ -243,6 +252,11 @@ fn requirement(requirement: &RequirementResult) -> Value {
         "limit": requirement.limit,
         "bound": bound_key(requirement.bound),
         "value": requirement.value,
+        "bent": requirement.bent.as_ref().map_or(Value::Null, bent),
+        "held_against": requirement
+            .bent
+            .and_then(|bent| bent.worst(requirement.bound))
+            .map(Bend::name),
         "met": match requirement.met {
             Met::Yes => json!(true),
             Met::No => json!(false),

@@ -198,8 +198,11 @@ const FIELD: Known = Known {
     place: |at, u| at.field = even(u),
     reading: |at| at.field,
 };
+/// Name of the input that stands for the way faces are bent, and how much.
+pub const BENDING: &str = "flatness, convex or concave";
+
 const FLATNESS: Known = Known {
-    name: "flatness, convex or concave",
+    name: BENDING,
     remedy: "measure the faces and state bow or flatness_map, or call out a closer flatness",
     place: |at, u| at.flatness = even(u),
     reading: |at| at.flatness,

@@ -5,12 +5,13 @@ use crate::{
         self, Band, CaseResult, Chain, Failure, LARGE_ERROR, Minimum, Options, TorquePoint,
         TorqueSweep,
     },
-    joint::{Joint, Limit, Plane, RequirementKind, Tightening},
+    joint::{Joint, Limit, Tightening},
 };
 
 use super::{
     Alternative, Answer,
     minimum::minimum,
+    requirement::required,
     window::{Rows, Sought, window},
 };
 
@@ -256,19 +257,4 @@ fn point(sought: &Sought<'_>, torque: f64) -> Result<(TorquePoint, Option<f64>),
     };
     let excess = sought.excess(&nominal, draws.as_ref());
     Ok((point, excess))
-}
-
-/// The requirement as a source-to-sink resistance, where it can be put so.
-pub(super) fn required(joint: &Joint) -> Option<(f64, Limit)> {
-    let require = joint.service.require?;
-    let flipped = match require.bound {
-        Limit::Most => Limit::Least,
-        Limit::Least => Limit::Most,
-    };
-    match require.kind {
-        RequirementKind::Rise => Some((require.limit / joint.service.heat?, require.bound)),
-        RequirementKind::Resistance(Plane::SourceToSink) => Some((require.limit, require.bound)),
-        RequirementKind::Conductance(Plane::SourceToSink) => Some((require.limit.recip(), flipped)),
-        _ => None,
-    }
 }

@@ -8,11 +8,12 @@ use crate::{
         Band, Chain, Drawn, End, Failure, Range, Realisation, Side, TorqueLimit, TorquePoint,
         TorqueWindow,
     },
-    joint::{Limit, Plane, Requirement, RequirementKind},
+    joint::{Limit, Plane, RequirementKind},
     numerics::roots,
     uncertainty::{
         Answer, Draws, SweepOptions,
         draws::draws_between,
+        requirement::limited,
         sweep::Others,
         trials::{alternatives, trials},
     },
@@ -390,40 +391,4 @@ fn larger(thread: &Thread, ratio: f64) -> Option<String> {
         .filter(|each| each.diameter > thread.diameter && each.stress_area >= wanted)
         .min_by(|one, other| one.stress_area.total_cmp(&other.stress_area))
         .map(|each| each.name.clone())
-}
-
-/// The limited quantity over the answer it is read from.
-#[derive(Clone, Copy, Debug)]
-enum Over {
-    /// So many times the answer.
-    Times(f64),
-    /// Its inverse.
-    Inverse,
-}
-
-impl Over {
-    /// Low and high of the quantity from those of the answer.
-    fn of(self, [low, high]: [f64; 2]) -> [f64; 2] {
-        match self {
-            Self::Times(factor) => [factor * low, factor * high],
-            Self::Inverse => [high.recip(), low.recip()],
-        }
-    }
-}
-
-/// The answer from which a limited quantity is read; none where it needs heat and none is stated.
-fn limited(require: Requirement, heat: Option<f64>) -> Option<(Answer, Over)> {
-    let answer = |plane: Plane| match plane {
-        Plane::Contact => Answer::Contact,
-        Plane::NodeToNode => Answer::NodeToNode,
-        Plane::AddedByJoint => Answer::AddedByJoint,
-        Plane::SourceToSink => Answer::SourceToSink,
-    };
-    Some(match require.kind {
-        RequirementKind::Rise => (Answer::SourceToSink, Over::Times(heat?)),
-        RequirementKind::HottestRise => (Answer::Hottest, Over::Times(heat?)),
-        RequirementKind::InterfaceDrop => (Answer::InterfaceDrop, Over::Times(heat?)),
-        RequirementKind::Resistance(plane) => (answer(plane), Over::Times(1.0)),
-        RequirementKind::Conductance(plane) => (answer(plane), Over::Inverse),
-    })
 }

@@ -30,6 +30,51 @@ pub struct Drawn {
     pub interface_drop: f64,
 }
 
+/// Which way faces are bent whose flatness is stated as a height alone.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Bend {
+    /// They meet in the middle and stand open at the edge.
+    Convex,
+    /// Not at all.
+    Flat,
+    /// They meet at the edge and stand open in the middle.
+    Concave,
+}
+
+impl Bend {
+    /// Every way, in the order in which draws tell them.
+    pub const ALL: [Self; 3] = [Self::Convex, Self::Flat, Self::Concave];
+
+    /// The way in which a draw is bent, by its place of flatness.
+    pub fn of(place: f64) -> Self {
+        if place < 0.0 {
+            Self::Convex
+        } else if place > 0.0 {
+            Self::Concave
+        } else {
+            Self::Flat
+        }
+    }
+
+    /// Its name for people.
+    pub fn name(self) -> &'static str {
+        match self {
+            Self::Convex => "convex",
+            Self::Flat => "flat",
+            Self::Concave => "concave",
+        }
+    }
+
+    /// Place of flatness of so much bending.
+    pub(super) fn place(self, height: f64) -> f64 {
+        match self {
+            Self::Convex => -height,
+            Self::Flat => 0.0,
+            Self::Concave => height,
+        }
+    }
+}
+
 /// One case of a chain, compiled for its draws.
 ///
 /// ```text
@@ -125,6 +170,32 @@ impl DrawPlan<'_> {
         self.chain
             .state(self.case, at)
             .map(|state| Drawn::of(&state.path))
+    }
+}
+
+impl DrawPlan<'_> {
+    /// The resistances at a realisation with its faces bent every way ([`Bend::ALL`]) by as much as there.
+    pub fn drawn_bent(
+        &self,
+        at: &Realisation,
+        workspace: &mut Workspace,
+    ) -> Result<[Drawn; 3], Failure> {
+        if let Field::Elastic(plan) = &self.field {
+            let conditions = &mut workspace.0;
+            self.outlook.put(at, conditions);
+            let found = plan.drawn_bent(conditions, at);
+            if found.iter().all(Drawn::is_sound) {
+                return Ok(found);
+            }
+        }
+        let [convex, flat, concave] = Bend::ALL.map(|bend| {
+            let bent = Realisation {
+                flatness: bend.place(at.flatness.abs()),
+                ..at.clone()
+            };
+            self.drawn(&bent, workspace)
+        });
+        Ok([convex?, flat?, concave?])
     }
 }
 

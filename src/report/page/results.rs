@@ -10,7 +10,7 @@ use crate::{
         media::vacuum_over,
         number::{band, four, inverse, optional, percent, spread},
         page::table::{Table, numbers, words},
-        text::thermal::{ICE_POINT, required},
+        text::thermal::{ICE_POINT, bent, required},
     },
     uncertainty::InMedium,
 };
@@ -204,6 +204,7 @@ fn told(estimate: &Estimate, case: &CaseResult) -> Vec<String> {
     if let Some(result) = &case.requirement {
         told.push(sentence(&required(result, estimate.draws)));
     }
+    told.extend(bent(case).map(|told| sentence(&told)));
     if let Some(worst) = case.worst {
         let [least, most] = worst.source_to_sink;
         told.push(format!(
