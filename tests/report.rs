@@ -677,6 +677,7 @@ fn torque_sweep() -> TorqueSweep {
         best: Some(1.0),
         at_stated: 0.11,
         at_limit: None,
+        bends: false,
         minimum: None,
         points: vec![point(1.0, 0.1), point(1.6, 0.11), point(2.2, 0.12)],
         required: Some((0.115, Limit::Most)),

@@ -528,16 +528,19 @@ pub struct TorqueSweep {
     pub stated: f64,
     /// Largest torque that passes every limit, N m, and the limit that ends it.
     pub largest: Option<(f64, &'static str)>,
-    /// Torque of the lowest source-to-sink resistance among those that strength allows, N m; of the
-    /// highest where the requirement asks for at least so much.
+    /// Torque of the lowest source-to-sink resistance among those that strength allows and separation asks
+    /// for, N m; of the highest where the requirement asks for at least so much.
     pub best: Option<f64>,
     /// The lowest point of the curve between swept torques, where it has one inside the window.
     pub minimum: Option<Minimum>,
     /// Source to sink at the stated torque itself, K/W.
     pub at_stated: f64,
-    /// The joint at the torque where strength ends, where that is the best and stands between two rows.
+    /// The joint at the torque where strength ends or separation begins, where that is the best and stands
+    /// between two rows.
     pub at_limit: Option<Minimum>,
-    /// Points, torque rising.
+    /// Whether faces may be bent either way, so that low and high hold for each.
+    pub bends: bool,
+    /// Points, torque rising, the stated torque among them where it lies in the range.
     pub points: Vec<TorquePoint>,
     /// Requirement in K/W of source to sink, where one can be put so.
     pub required: Option<(f64, Limit)>,

@@ -356,6 +356,15 @@ pub fn torque(sweep: &TorqueSweep) -> Value {
         "field": sweep.field,
         "resolution": sweep.resolution,
         "stated": sweep.stated,
+        "stated_stands": {
+            "inside": sweep
+                .window
+                .both
+                .map(|both| both.low.torque <= sweep.stated && sweep.stated <= both.high.torque),
+            "breaks": window::limits(&sweep.window.broken_at(sweep.stated)),
+            "requirement_met": sweep.window.heat_met_at(sweep.stated),
+        },
+        "bends": sweep.bends,
         "largest": sweep.largest.map(|(torque, limit)| json!({ "torque": torque, "limit": limit })),
         "best": sweep.best,
         "minimum": sweep.minimum.map(|minimum| json!({

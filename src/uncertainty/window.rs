@@ -191,18 +191,25 @@ impl Sought<'_> {
         }
     }
 
-    /// Least resistance that the joint can add within strength: at the rows that pass, at the minimum
-    /// between them and at the largest torque.
+    /// Least resistance that the joint can add within separation and strength: at the rows that pass, at
+    /// the minimum between them and at both ends.
     fn attainable(
         &self,
         points: &[TorquePoint],
-        (largest, minimum): (Option<f64>, Option<f64>),
+        ([least, largest], minimum): ([Option<f64>; 2], Option<f64>),
     ) -> Result<Option<f64>, Failure> {
-        let rows = points.iter().filter(|point| point.passes);
+        let holds = |point: &&TorquePoint| least.is_none_or(|least| point.torque >= least);
+        let rows = points.iter().filter(|point| point.passes).filter(holds);
         let mut added: Vec<f64> = rows.map(|point| point.added_by_joint.nominal).collect();
         added.extend(minimum);
-        if let Some(largest) = largest.filter(|torque| self.is_swept(*torque)) {
-            added.push(self.added_at(largest)?);
+        let ends = match (least, largest) {
+            (Some(least), Some(largest)) if least > largest => [None; 2],
+            ends => ends.into(),
+        };
+        for end in ends.into_iter().flatten() {
+            if self.is_swept(end) {
+                added.push(self.added_at(end)?);
+            }
         }
         Ok(added.into_iter().min_by(f64::total_cmp))
     }
@@ -240,7 +247,9 @@ pub(super) fn window(
     let attainable = if resists {
         None
     } else {
-        sought.attainable(rows.points, (most, rows.minimum.map(|(_, added)| added)))?
+        let least = limits.iter().find(|limit| limit.side == Side::Least);
+        let ends = [least.map(|limit| limit.torque), most];
+        sought.attainable(rows.points, (ends, rows.minimum.map(|(_, added)| added)))?
     };
     let heat = ranges(sought, rows, &limits)?;
     let both = joined(strength, heat.as_deref());
