@@ -216,16 +216,12 @@ fn advice(sweep: &TorqueSweep, best: Option<usize>) -> String {
 
 /// What makes the best torque the best.
 fn praise(sweep: &TorqueSweep, there: f64) -> String {
-    let allows = match sweep.window.least() {
-        Some(_) => "separation and strength allow",
-        None => "strength allows",
-    };
     if sweep.resists() {
-        format!("highest source to sink that {allows} here")
+        "highest source to sink that strength allows here".to_owned()
     } else if sweep.minimum.is_some() {
         format!("the minimum of source to sink, {} K/W", four(there))
     } else {
-        format!("lowest source to sink that {allows} here")
+        "lowest source to sink that strength allows here".to_owned()
     }
 }
 
@@ -240,8 +236,7 @@ fn remarks(sweep: &TorqueSweep, index: usize) -> Vec<&'static str> {
         let least = sweep.window.least();
         let least = least.is_some_and(|least| least.torque >= limit.torque);
         lines.push(if least {
-            "it is the least torque that keeps the faces together, between two rows: separation bounds it, \
-             not the heat"
+            "it is the least torque that keeps the faces together: separation bounds it"
         } else {
             "it is the limit of strength itself, between two rows"
         });
