@@ -331,6 +331,9 @@ fn case_result(chain: &Chain, case: usize, numerical_error: f64) -> Result<CaseR
             interface_drop: Band::nominal(heat * path.interface_drop),
             coolant_drop: path.coolant_drop.map(|drop| heat * drop),
             coolant_drop_ends: None,
+            above_coolant: path.coolant_drop.map(|drop| {
+                [path.source_to_sink, path.hottest].map(|rise| Band::nominal(heat * (rise + drop)))
+            }),
         }),
         temperatures: chain.temperatures(case)?,
         requirement: None,

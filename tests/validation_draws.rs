@@ -7,6 +7,8 @@ mod bands;
 mod bent;
 #[path = "validation_draws/coverage.rs"]
 mod coverage;
+#[path = "validation_draws/heat.rs"]
+mod heat;
 #[path = "validation_draws/plan.rs"]
 mod plan;
 #[path = "validation_draws/remade.rs"]

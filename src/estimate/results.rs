@@ -48,6 +48,16 @@ impl Band {
         }
     }
 
+    /// Every number plus one.
+    #[must_use]
+    pub fn plus(&self, more: f64) -> Self {
+        Self {
+            low: self.low.map(|low| low + more),
+            nominal: self.nominal + more,
+            high: self.high.map(|high| high + more),
+        }
+    }
+
     /// Conductance from resistance and back: the ends change places.
     #[must_use]
     pub fn inverse(&self) -> Self {
@@ -286,8 +296,10 @@ pub struct Rise {
     pub interface_drop: Band,
     /// Film drop from the sink surface to the coolant, where there is a film.
     pub coolant_drop: Option<f64>,
-    /// Its low and high, where its film is stated with a spread and no other takes heat beside it.
+    /// Its low and high, where a film or the heat is stated with a spread.
     pub coolant_drop_ends: Option<[f64; 2]>,
+    /// Mean of the source and hottest point above the coolant, where there is a film.
+    pub above_coolant: Option<[Band; 2]>,
 }
 
 /// One thermal case: a sink temperature and everything that follows from it.

@@ -234,6 +234,9 @@ fn rise(case: &CaseResult) -> Value {
             "interface_drop": band(&rise.interface_drop),
             "coolant_drop": rise.coolant_drop,
             "coolant_drop_ends": rise.coolant_drop_ends,
+            "above_coolant": rise.above_coolant.as_ref().map(|[source, hottest]| {
+                json!({ "source": band(source), "hottest": band(hottest) })
+            }),
         })
     })
 }
@@ -242,6 +245,8 @@ fn requirement(requirement: &RequirementResult) -> Value {
     let (kind, plane) = match requirement.kind {
         RequirementKind::Rise => ("rise", None),
         RequirementKind::HottestRise => ("hottest_rise", None),
+        RequirementKind::AboveCoolant => ("rise_above_coolant", None),
+        RequirementKind::HottestAboveCoolant => ("hottest_rise_above_coolant", None),
         RequirementKind::InterfaceDrop => ("interface_drop", None),
         RequirementKind::Resistance(plane) => ("resistance", Some(plane)),
         RequirementKind::Conductance(plane) => ("conductance", Some(plane)),

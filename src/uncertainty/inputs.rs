@@ -343,6 +343,10 @@ fn stated(joint: &Joint, index: usize) -> Input {
             "film of the sink",
             "measure the film on a heated dummy in the flow of service, or hold the flow closer",
         ),
+        What::Heat => (
+            HEAT,
+            "measure the heat, or state the range of service more closely",
+        ),
         What::GasPressure => (
             "pressure of the gas",
             "measure or hold the pressure of service",
@@ -358,6 +362,8 @@ fn stated(joint: &Joint, index: usize) -> Input {
     }
 }
 
+/// Name of the input that stands for a heat stated with a spread.
+pub const HEAT: &str = "heat";
 /// Name of the input that stands for the error of the grid.
 pub const NUMERICAL: &str = "numerical error";
 

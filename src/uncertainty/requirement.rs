@@ -2,7 +2,7 @@
 
 use crate::{
     estimate::{Band, Bent, CaseResult, LARGE_ERROR, Met, RequirementResult},
-    joint::{Joint, Limit, Plane, Requirement, RequirementKind},
+    joint::{Joint, Limit, Plane, Requirement, RequirementKind, What},
     uncertainty::{Answer, Draws},
 };
 
@@ -42,6 +42,8 @@ fn band(case: &CaseResult, require: Requirement) -> Option<Band> {
     Some(match require.kind {
         RequirementKind::Rise => case.rise?.source,
         RequirementKind::HottestRise => case.rise?.hottest,
+        RequirementKind::AboveCoolant => case.rise?.above_coolant?[0],
+        RequirementKind::HottestAboveCoolant => case.rise?.above_coolant?[1],
         RequirementKind::InterfaceDrop => case.rise?.interface_drop,
         RequirementKind::Resistance(plane) => resistance(case, plane),
         RequirementKind::Conductance(plane) => resistance(case, plane).inverse(),
@@ -58,10 +60,21 @@ fn resistance(case: &CaseResult, plane: Plane) -> Band {
     .resistance
 }
 
+/// What the draws of a joint are asked for: what is printed, and what is limited.
+pub(super) fn asked(joint: &Joint) -> Vec<Answer> {
+    let mut asked = Answer::asked(joint);
+    if let Some((answer, _)) = limited(joint)
+        && !asked.contains(&answer)
+    {
+        asked.push(answer);
+    }
+    asked
+}
+
 /// The ends of the limited quantity by the way the faces are bent; none where nothing is required or the
 /// faces are not bent by themselves.
 pub(super) fn bent(joint: &Joint, draws: &Draws) -> Option<Bent> {
-    let (answer, scale) = limited(joint.service.require?, joint.service.heat)?;
+    let (answer, scale) = limited(joint)?;
     Some(draws.bent(answer)?.map(|ends| scale.of(ends)))
 }
 
@@ -73,7 +86,10 @@ pub(super) fn required(joint: &Joint) -> Option<(f64, Limit)> {
         Limit::Least => Limit::Most,
     };
     match require.kind {
-        RequirementKind::Rise => Some((require.limit / joint.service.heat?, require.bound)),
+        // A heat that scatters leaves no one resistance.
+        RequirementKind::Rise if joint.spread_of(What::Heat).is_none() => {
+            Some((require.limit / joint.service.heat?, require.bound))
+        }
         RequirementKind::Resistance(Plane::SourceToSink) => Some((require.limit, require.bound)),
         RequirementKind::Conductance(Plane::SourceToSink) => Some((require.limit.recip(), flipped)),
         _ => None,
@@ -100,7 +116,10 @@ impl Over {
 }
 
 /// The answer from which a limited quantity is read; none where it needs heat and none is stated.
-pub(super) fn limited(require: Requirement, heat: Option<f64>) -> Option<(Answer, Over)> {
+pub(super) fn limited(joint: &Joint) -> Option<(Answer, Over)> {
+    let (require, heat) = (joint.service.require?, joint.service.heat);
+    let scatters = joint.scatters_heat();
+    let risen = |resistance: Answer, rise: Answer| if scatters { rise } else { resistance };
     let answer = |plane: Plane| match plane {
         Plane::Contact => Answer::Contact,
         Plane::NodeToNode => Answer::NodeToNode,
@@ -108,9 +127,20 @@ pub(super) fn limited(require: Requirement, heat: Option<f64>) -> Option<(Answer
         Plane::SourceToSink => Answer::SourceToSink,
     };
     Some(match require.kind {
-        RequirementKind::Rise => (Answer::SourceToSink, Over::Times(heat?)),
-        RequirementKind::HottestRise => (Answer::Hottest, Over::Times(heat?)),
-        RequirementKind::InterfaceDrop => (Answer::InterfaceDrop, Over::Times(heat?)),
+        RequirementKind::Rise => (
+            risen(Answer::SourceToSink, Answer::SourceRise),
+            Over::Times(heat?),
+        ),
+        RequirementKind::HottestRise => (
+            risen(Answer::Hottest, Answer::HottestRise),
+            Over::Times(heat?),
+        ),
+        RequirementKind::AboveCoolant => (Answer::AboveCoolant, Over::Times(heat?)),
+        RequirementKind::HottestAboveCoolant => (Answer::HottestAboveCoolant, Over::Times(heat?)),
+        RequirementKind::InterfaceDrop => (
+            risen(Answer::InterfaceDrop, Answer::DropRise),
+            Over::Times(heat?),
+        ),
         RequirementKind::Resistance(plane) => (answer(plane), Over::Times(1.0)),
         RequirementKind::Conductance(plane) => (answer(plane), Over::Inverse),
     })

@@ -11,7 +11,7 @@ use crate::{
 use super::{
     Alternative, Answer,
     minimum::minimum,
-    requirement::required,
+    requirement::{asked, required},
     window::{Rows, Sought, window},
 };
 
@@ -293,7 +293,7 @@ fn point(sought: &Sought<'_>, torque: f64) -> Result<(TorquePoint, Option<f64>),
     let strength = chain.strength(options.group);
     let draws = match options.chain.draws {
         0 => None,
-        _ => Some(sought.drawn(&chain, &Answer::ALL)?),
+        _ => Some(sought.drawn(&chain, &asked(chain.joint()))?),
     };
     let band = |answer: Answer| {
         let value = answer.of(&nominal);

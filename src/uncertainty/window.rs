@@ -56,8 +56,7 @@ impl Sought<'_> {
     /// where it is met. None where nothing is required, or it needs heat and none is stated.
     pub(super) fn excess(&self, nominal: &Drawn, draws: Option<&Draws>) -> Option<f64> {
         let require = self.chain.joint().service.require?;
-        let heat = self.chain.joint().service.heat;
-        let (answer, scale) = limited(require, heat)?;
+        let (answer, scale) = limited(self.chain.joint())?;
         let value = answer.of(nominal);
         let band = draws.map_or(Band::nominal(value), |draws| draws.band(answer, value));
         let [low, high] = scale.of([band.low.unwrap_or(value), band.high.unwrap_or(value)]);
@@ -88,9 +87,7 @@ impl Sought<'_> {
     pub(super) fn excess_at(&self, torque: f64) -> Result<f64, Failure> {
         let chain = self.at(torque)?;
         let nominal = chain.nominal_answers(self.case)?;
-        let require = self.chain.joint().service.require;
-        let limited = require.and_then(|require| limited(require, self.chain.joint().service.heat));
-        let drawn = match (self.options.chain.draws, limited) {
+        let drawn = match (self.options.chain.draws, limited(self.chain.joint())) {
             (0, _) | (_, None) => None,
             (_, Some((answer, _))) => Some(self.drawn(&chain, &[answer])?),
         };

@@ -28,6 +28,10 @@ pub struct Drawn {
     pub hottest: f64,
     /// Mean drop across the faying faces.
     pub interface_drop: f64,
+    /// From the mean sink surface to the coolant; 0 without a film.
+    pub coolant_drop: f64,
+    /// Heat over the nominal heat, 1.
+    pub heat: f64,
 }
 
 /// Which way faces are bent whose flatness is stated as a height alone.
@@ -93,6 +97,8 @@ pub struct DrawPlan<'a> {
     case: usize,
     outlook: Outlook<'a>,
     field: Field<'a>,
+    /// Whether heat or films scatter.
+    heat_scatters: bool,
 }
 
 /// What stands for the field.
@@ -141,6 +147,7 @@ impl Chain<'_> {
             case,
             outlook,
             field,
+            heat_scatters: self.joint.scatters_heat(),
         })
     }
 }
@@ -164,12 +171,24 @@ impl DrawPlan<'_> {
             (Field::Cone, Model::Elastic(_)) => unreachable!("the plan is of this chain"),
         };
         if found.is_sound() {
-            return Ok(found);
+            return Ok(self.heated(found, at));
         }
         // The chain itself knows what may be infinite, and names what may not.
-        self.chain
-            .state(self.case, at)
-            .map(|state| Drawn::of(&state.path))
+        let state = self.chain.state(self.case, at)?;
+        Ok(self.heated(Drawn::of(&state.path), at))
+    }
+
+    /// With the heat and the films of a draw.
+    fn heated(&self, drawn: Drawn, at: &Realisation) -> Drawn {
+        if !self.heat_scatters {
+            return drawn;
+        }
+        let joint = self.chain.joint();
+        Drawn {
+            heat: joint.heat_factor(&at.stated),
+            coolant_drop: drawn.coolant_drop * joint.coolant_factor(&at.stated),
+            ..drawn
+        }
     }
 }
 
@@ -185,7 +204,7 @@ impl DrawPlan<'_> {
             self.outlook.put(at, conditions);
             let found = plan.drawn_bent(conditions, at);
             if found.iter().all(Drawn::is_sound) {
-                return Ok(found);
+                return Ok(found.map(|drawn| self.heated(drawn, at)));
             }
         }
         let [convex, flat, concave] = Bend::ALL.map(|bend| {
@@ -214,7 +233,7 @@ impl DrawPlan<'_> {
 }
 
 impl Drawn {
-    /// All, in the order of the fields.
+    /// The resistances that the field tells, in the order of the fields.
     pub fn all(&self) -> [f64; 7] {
         [
             self.contact,
@@ -253,6 +272,7 @@ impl Drawn {
             perfect_contact: self.perfect_contact * factor,
             hottest: self.hottest * factor,
             interface_drop: self.interface_drop * factor,
+            ..self
         }
     }
 

@@ -195,8 +195,12 @@ fn told(estimate: &Estimate, case: &CaseResult) -> Vec<String> {
             four(rise.interface_drop.nominal)
         ));
         if let Some(drop) = rise.coolant_drop {
+            let ends = rise.coolant_drop_ends;
+            let ends = ends.map_or_else(String::new, |[low, high]| {
+                format!(" ({} to {})", four(low), four(high))
+            });
             told.push(format!(
-                "From sink surface to coolant: {} K more.",
+                "From sink surface to coolant: {}{ends} K more.",
                 four(drop)
             ));
         }

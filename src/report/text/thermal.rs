@@ -235,6 +235,11 @@ pub(in crate::report) fn required(requirement: &RequirementResult, draws: u32) -
     let (quantity, unit) = match requirement.kind {
         RequirementKind::Rise => ("rise above the sink surface".to_owned(), "K"),
         RequirementKind::HottestRise => ("rise of the hottest point".to_owned(), "K"),
+        RequirementKind::AboveCoolant => ("rise above the coolant".to_owned(), "K"),
+        RequirementKind::HottestAboveCoolant => (
+            "rise of the hottest point above the coolant".to_owned(),
+            "K",
+        ),
         RequirementKind::InterfaceDrop => ("drop across the faces".to_owned(), "K"),
         RequirementKind::Resistance(plane) => (format!("resistance {}", plane_name(plane)), "K/W"),
         RequirementKind::Conductance(plane) => {

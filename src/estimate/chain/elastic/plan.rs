@@ -184,6 +184,7 @@ impl Drawn {
             node_to_node: share(self.node_to_node, node),
             interface_drop: share(self.interface_drop, interface),
             hottest: share(self.hottest, hottest),
+            ..*self
         }
     }
 
@@ -197,6 +198,8 @@ impl Drawn {
             perfect_contact: path.perfect_contact,
             hottest: path.hottest,
             interface_drop: path.interface_drop,
+            coolant_drop: path.coolant_drop.unwrap_or(0.0),
+            heat: 1.0,
         }
     }
 }
