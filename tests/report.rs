@@ -1,5 +1,7 @@
 //! The report of `estimate`, as text and as JSON, from a result built by hand.
 
+#[path = "report/drivers.rs"]
+mod drivers;
 #[path = "report/solved.rs"]
 mod solved;
 
@@ -102,6 +104,7 @@ fn case(name: &'static str, sink_temperature: f64) -> CaseResult {
             interface_drop: Band::nominal(2.9),
             coolant_drop: Some(0.75),
             coolant_drop_ends: Some([0.6, 1.0]),
+            above_coolant: Some([band(5.1, 6.25, 9.6), Band::nominal(6.85)]),
         }),
         temperatures: None,
         requirement: Some(RequirementResult {
@@ -436,6 +439,7 @@ fn a_verdict_says_what_is_met_and_what_is_not_known() {
             limit: 3.0,
             bound: Limit::Least,
             value: 3.25,
+            bent: None,
             met,
         });
         let report = text::estimate(&changed);
