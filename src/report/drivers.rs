@@ -77,7 +77,7 @@ pub fn text(ranking: &Ranking) -> String {
         Scale::Itself => format!("of the variance of {target}"),
     };
     for line in [
-        format!("share {scale}, ± its 95 % interval; of its own: what goes if this input alone is known; in total: what is left if all others are"),
+        format!("share {scale}, ± its 95 % interval (? where it is wider than the share); of its own: what goes if this input alone is known; in total: what is left if all others are"),
         format!("{} belongs to no input alone", percent(ranking.interaction)),
         "alone: this input at its 5 % and 95 %, all others nominal; known: the band if this input were known to be nominal".to_owned(),
         if ranking.interaction > MUCH {
