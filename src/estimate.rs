@@ -6,6 +6,7 @@ mod choice;
 mod forces;
 mod loss;
 mod maps;
+mod requirement;
 mod results;
 mod surfaces;
 mod temperatures;
@@ -13,11 +14,12 @@ mod torques;
 mod window;
 
 pub(crate) use chain::LARGE_ERROR;
-pub use chain::{Chain, Conditions, DrawPlan, Drawn, ForceEnd, Meeting, State, Workspace};
+pub use chain::{Bend, Chain, Conditions, DrawPlan, Drawn, ForceEnd, Meeting, State, Workspace};
 pub use choice::{Choice, Fineness, Watch};
 pub use forces::Strength;
 pub use loss::{Loss, worst_loss};
 pub use maps::{field_map, ring_tables};
+pub use requirement::{Bent, Met, RequirementResult};
 pub use results::*;
 pub use temperatures::{
     FacePoint, HeatMap, OutlinePlate, SectionBolt, SectionPlate, Solid, StackOutline, StackSection,
@@ -321,6 +323,7 @@ fn case_result(chain: &Chain, case: usize, numerical_error: f64) -> Result<CaseR
         worst: None,
         draw_error: None,
         sampling: None,
+        bent: None,
         footprint: chain.footprint(),
         rise: joint.service.heat.map(|heat| Rise {
             source: Band::nominal(heat * path.source_to_sink),
@@ -328,6 +331,9 @@ fn case_result(chain: &Chain, case: usize, numerical_error: f64) -> Result<CaseR
             interface_drop: Band::nominal(heat * path.interface_drop),
             coolant_drop: path.coolant_drop.map(|drop| heat * drop),
             coolant_drop_ends: None,
+            above_coolant: path.coolant_drop.map(|drop| {
+                [path.source_to_sink, path.hottest].map(|rise| Band::nominal(heat * (rise + drop)))
+            }),
         }),
         temperatures: chain.temperatures(case)?,
         requirement: None,

@@ -44,6 +44,11 @@ pub enum Failure {
     /// The requirement limits a rise, and no heat is stated.
     #[error("the requirement limits a rise, but the joint states no heat")]
     NoHeat,
+    /// The requirement counts from the coolant, which the screening does not know.
+    #[error(
+        "the requirement counts from the coolant, and layouts are compared above the sink surface"
+    )]
+    FromCoolant,
     /// A size makes a joint that cannot be read.
     #[error("{size} makes a joint that cannot be: {fault}")]
     Size {

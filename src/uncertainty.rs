@@ -13,6 +13,7 @@ mod media;
 mod minimum;
 mod ranking;
 mod remedies;
+mod requirement;
 mod shares;
 mod sweep;
 mod trials;
@@ -24,7 +25,7 @@ pub use answer::Answer;
 pub use comparison::{Compared, Comparison, Contender, Sense, Verdict, comparison, side_by_side};
 pub use draws::{Draws, draws};
 pub use indices::{Bases, FEWEST_BASES, Index, Share, indices};
-pub use inputs::{Input, Moves, NUMERICAL, inputs};
+pub use inputs::{BENDING, HEAT, Input, Moves, NUMERICAL, inputs};
 pub use media::{InMedium, in_media};
 pub use ranking::{Ranked, Ranking, RankingOptions, Scale, Target, ranking};
 pub(crate) use sweep::worst_case;
@@ -35,11 +36,13 @@ pub use window::{FIRST, LAST, NOTHING, REQUIREMENT};
 
 use crate::{
     estimate::{
-        self, Band, CaseResult, Chain, Checkpoint, Driver, Estimate, Failure, LARGE_ERROR, Met,
-        Options, PlaneResult, RequirementResult, Results, Rise, Sampling,
+        self, Band, Bent, CaseResult, Chain, Checkpoint, Driver, Estimate, Failure, Options,
+        PlaneResult, Results, Rise, Sampling,
     },
-    joint::{Cooling, Joint, Limit, Plane, Requirement, RequirementKind, What},
+    joint::{Cooling, Joint, What},
 };
+
+use requirement::judge;
 
 /// Quantiles that bound every band.
 pub const QUANTILES: [f64; 2] = [0.05, 0.95];
@@ -53,18 +56,21 @@ pub fn estimate(joint: &Joint, options: &Options) -> Result<Estimate, Failure> {
 pub fn along(chain: &Chain, options: &Options) -> Result<Estimate, Failure> {
     let joint = chain.joint();
     let mut found = estimate::nominal(chain, options)?;
+    let mut bent: Vec<Option<Bent>> = Vec::new();
     if options.draws > 0 {
         for case in 0..found.cases.len() {
-            let draws = draws(chain, (case, &Answer::ALL), options)?;
+            let draws = draws(chain, (case, &requirement::asked(joint)), options)?;
             apply(&draws, joint, &mut found.cases[case]);
+            bent.push(requirement::bent(joint, &draws));
             found.cases[case].worst = worst::worst(&chain.draw_plan(case)?, &draws.inputs);
             found.cases[case].draw_error = chain.draw_error(case);
         }
     }
     found.caution_of_draws();
+    bent.resize(found.cases.len(), None);
     let trusted = !found.flatness_decides();
-    for case in &mut found.cases {
-        judge(joint, case, trusted);
+    for (case, bent) in found.cases.iter_mut().zip(bent) {
+        judge(joint, case, (trusted, bent));
     }
     Ok(found)
 }
@@ -81,21 +87,55 @@ fn apply(draws: &Draws, joint: &Joint, case: &mut CaseResult) {
         perfect_contact: band(case.results.perfect_contact, Answer::PerfectContact),
     };
     if let (Some(heat), Some(rise)) = (joint.service.heat, &mut case.rise) {
-        let scaled = |nominal: f64, answer: Answer| draws.band(answer, nominal / heat).times(heat);
-        *rise = Rise {
-            source: scaled(rise.source.nominal, Answer::SourceToSink),
-            hottest: scaled(rise.hottest.nominal, Answer::Hottest),
-            interface_drop: scaled(rise.interface_drop.nominal, Answer::InterfaceDrop),
-            coolant_drop: rise.coolant_drop,
-            coolant_drop_ends: rise.coolant_drop.and_then(|drop| coolant_ends(joint, drop)),
-        };
+        *rise = rises(draws, joint, (heat, rise));
     }
     case.sampling = sampling(draws);
+    case.bent = draws.bent(Answer::SourceToSink);
     case.drivers = drivers(draws);
 }
 
-/// Drop to the coolant at the quantiles of the film, K; none where the film has no spread, and where heat
-/// leaves by more ways than one.
+/// Temperature rises with their bands.
+fn rises(draws: &Draws, joint: &Joint, (heat, nominal): (f64, &Rise)) -> Rise {
+    let band = |nominal: Band, answer: Answer| {
+        let drawn = draws.band(answer, nominal.nominal / heat);
+        drawn.times(heat)
+    };
+    if !joint.scatters_heat() {
+        let [source, hottest, drop] = [
+            band(nominal.source, Answer::SourceToSink),
+            band(nominal.hottest, Answer::Hottest),
+            band(nominal.interface_drop, Answer::InterfaceDrop),
+        ];
+        let above = nominal
+            .coolant_drop
+            .map(|drop| [source.plus(drop), hottest.plus(drop)]);
+        return Rise {
+            source,
+            hottest,
+            interface_drop: drop,
+            above_coolant: above,
+            ..*nominal
+        };
+    }
+    let drop = nominal.coolant_drop.map(Band::nominal);
+    let drop = drop.map(|drop| band(drop, Answer::CoolantDrop));
+    let ends = drop.and_then(|drop| drop.low.zip(drop.high));
+    let alone = || coolant_ends(joint, nominal.coolant_drop?);
+    let above = [Answer::AboveCoolant, Answer::HottestAboveCoolant];
+    Rise {
+        source: band(nominal.source, Answer::SourceRise),
+        hottest: band(nominal.hottest, Answer::HottestRise),
+        interface_drop: band(nominal.interface_drop, Answer::DropRise),
+        coolant_drop: nominal.coolant_drop,
+        coolant_drop_ends: alone().or(ends.map(|(low, high)| [low, high])),
+        above_coolant: nominal
+            .above_coolant
+            .map(|each| [band(each[0], above[0]), band(each[1], above[1])]),
+    }
+}
+
+/// Drop to the coolant at the quantiles of the film, K; none where the film has no spread or the heat
+/// has one, and where heat leaves by more ways than one.
 ///
 /// ```text
 /// ΔT = Q/(h A)
@@ -107,6 +147,7 @@ fn coolant_ends(joint: &Joint, nominal: f64) -> Option<[f64; 2]> {
         Cooling::Whole(_) => true,
         Cooling::Parts(parts) => parts.len() == 1,
     };
+    let alone = alone && joint.spread_of(What::Heat).is_none();
     let film = joint.spread_of(What::Film(0)).filter(|_| alone)?;
     let [low, high] = QUANTILES.map(|quantile| film.at(2.0 * quantile - 1.0));
     Some([high, low].map(|film_there| nominal * film.nominal / film_there))
@@ -145,55 +186,4 @@ fn drivers(draws: &Draws) -> Vec<Driver> {
     }
     drivers.sort_by(|one, other| other.share.total_cmp(&one.share));
     drivers
-}
-
-/// Holds the requirement against the unfavourable end of the band; a field that is not trusted
-/// leaves what it meets uncertain.
-fn judge(joint: &Joint, case: &mut CaseResult, trusted: bool) {
-    case.requirement = joint.service.require.and_then(|require| {
-        let band = limited(case, require)?;
-        let unfavourable = match require.bound {
-            Limit::Most => band.high,
-            Limit::Least => band.low,
-        };
-        let holds = |value: f64| match require.bound {
-            Limit::Most => value <= require.limit,
-            Limit::Least => value >= require.limit,
-        };
-        // What the grid does not resolve meets nothing for sure.
-        let trusted = trusted && case.numerical_error <= LARGE_ERROR;
-        let met = match (holds(band.nominal), unfavourable.map(holds)) {
-            (true, Some(true)) if trusted => Met::Yes,
-            (true, _) => Met::Uncertain,
-            (false, _) => Met::No,
-        };
-        Some(RequirementResult {
-            kind: require.kind,
-            limit: require.limit,
-            bound: require.bound,
-            value: unfavourable.unwrap_or(band.nominal),
-            met,
-        })
-    });
-}
-
-/// The band of the limited quantity; none where it needs heat and none is stated.
-fn limited(case: &CaseResult, require: Requirement) -> Option<Band> {
-    Some(match require.kind {
-        RequirementKind::Rise => case.rise?.source,
-        RequirementKind::HottestRise => case.rise?.hottest,
-        RequirementKind::InterfaceDrop => case.rise?.interface_drop,
-        RequirementKind::Resistance(plane) => resistance(case, plane),
-        RequirementKind::Conductance(plane) => resistance(case, plane).inverse(),
-    })
-}
-
-fn resistance(case: &CaseResult, plane: Plane) -> Band {
-    match plane {
-        Plane::Contact => case.results.contact,
-        Plane::NodeToNode => case.results.node_to_node,
-        Plane::AddedByJoint => case.results.added_by_joint,
-        Plane::SourceToSink => case.results.source_to_sink,
-    }
-    .resistance
 }

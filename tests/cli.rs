@@ -754,7 +754,8 @@ fn a_torque_curve_is_told_and_drawn_without_leaving_anything_behind() {
     );
 
     let object = json(&sweep(&["--json"]).code(0).stderr_eq(""));
-    assert_eq!(object["points"].as_array().unwrap().len(), 3);
+    // Three steps, and the stated torque between them.
+    assert_eq!(object["points"].as_array().unwrap().len(), 4);
     sweep(&["--group", "2"]).code(2).stdout_eq("");
 }
 

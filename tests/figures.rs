@@ -167,6 +167,7 @@ fn sweep() -> TorqueSweep {
         best: Some(2.8),
         at_stated: 0.165,
         at_limit: None,
+        bends: false,
         minimum: None,
         points: (1..=16)
             .map(|k| {

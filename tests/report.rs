@@ -1,5 +1,7 @@
 //! The report of `estimate`, as text and as JSON, from a result built by hand.
 
+#[path = "report/drivers.rs"]
+mod drivers;
 #[path = "report/solved.rs"]
 mod solved;
 
@@ -94,6 +96,7 @@ fn case(name: &'static str, sink_temperature: f64) -> CaseResult {
         }),
         draw_error: None,
         sampling: None,
+        bent: None,
         footprint: 0.0192,
         rise: Some(Rise {
             source: band(4.4, 5.5, 8.8),
@@ -101,6 +104,7 @@ fn case(name: &'static str, sink_temperature: f64) -> CaseResult {
             interface_drop: Band::nominal(2.9),
             coolant_drop: Some(0.75),
             coolant_drop_ends: Some([0.6, 1.0]),
+            above_coolant: Some([band(5.1, 6.25, 9.6), Band::nominal(6.85)]),
         }),
         temperatures: None,
         requirement: Some(RequirementResult {
@@ -108,6 +112,7 @@ fn case(name: &'static str, sink_temperature: f64) -> CaseResult {
             limit: 5.0,
             bound: Limit::Most,
             value: 8.8,
+            bent: None,
             met: Met::No,
         }),
         drivers: vec![
@@ -434,6 +439,7 @@ fn a_verdict_says_what_is_met_and_what_is_not_known() {
             limit: 3.0,
             bound: Limit::Least,
             value: 3.25,
+            bent: None,
             met,
         });
         let report = text::estimate(&changed);
@@ -675,6 +681,7 @@ fn torque_sweep() -> TorqueSweep {
         best: Some(1.0),
         at_stated: 0.11,
         at_limit: None,
+        bends: false,
         minimum: None,
         points: vec![point(1.0, 0.1), point(1.6, 0.11), point(2.2, 0.12)],
         required: Some((0.115, Limit::Most)),

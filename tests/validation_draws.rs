@@ -3,8 +3,12 @@
 
 #[path = "validation_draws/bands.rs"]
 mod bands;
+#[path = "validation_draws/bent.rs"]
+mod bent;
 #[path = "validation_draws/coverage.rs"]
 mod coverage;
+#[path = "validation_draws/heat.rs"]
+mod heat;
 #[path = "validation_draws/plan.rs"]
 mod plan;
 #[path = "validation_draws/remade.rs"]

@@ -4,6 +4,7 @@ use ringsum::{
     estimate::{Chain, Judged, Options, Range, Side, TorqueSweep, Trial},
     joint::{self, Joint},
     layout,
+    report::sweep as report,
     uncertainty::{FIRST, REQUIREMENT, SweepOptions, sweep_beside, torque_sweep},
 };
 
@@ -321,4 +322,69 @@ fn joints_that_open_a_shut_window_do_so_in_a_sweep_of_their_own() {
         }
     }
     assert!(opened >= 2, "{:#?}", sweep.window.trials);
+}
+
+/// The joint of a load along the bolts that is to resist.
+fn resisting(load: &str) -> Joint {
+    let text = text("1000 K", load).replace(
+        "require = { rise = \"1000 K\" }",
+        "require = { resistance = \"0.001 K/W\", bound = \"least\" }",
+    );
+    read(&text)
+}
+
+// Less torque resists more, down to where the faces part.
+#[test]
+fn the_best_torque_keeps_the_faces_together() {
+    let sweep = swept(&resisting("300 N"), 5, 0.9);
+    let least = sweep.window.least().expect("a load asks for force").torque;
+    assert!(sweep.points[0].torque < least, "{least}");
+    let best = sweep.best.expect("a torque between both limits");
+    assert!((best - least).abs() < 1e-9, "{best} {least}");
+    assert_eq!(sweep.at_limit.map(|limit| limit.torque), sweep.best);
+    let text = report::torque(&sweep);
+    assert!(text.contains("separation bounds it"), "{text}");
+    // With rows between the limits too.
+    let fine = swept(&resisting("300 N"), 41, 0.9).best.expect("a torque");
+    assert!((fine - least).abs() < 1e-9, "{fine} {least}");
+}
+
+#[test]
+fn the_stated_torque_is_a_row_and_told_where_it_stands() {
+    let sweep = swept(&joint("1000 K", "300 N"), 5, 0.9);
+    assert_eq!(sweep.points.len(), 6);
+    let at = |torque: f64| {
+        let rows = sweep.points.iter();
+        rows.filter(|row| (row.torque - torque).abs() < 1e-12)
+            .count()
+    };
+    // The stated 1.7 N·m, and the ends of the range that was asked for.
+    assert_eq!([at(1.7), at(0.2), at(3.0)], [1; 3]);
+    let row = sweep
+        .points
+        .iter()
+        .find(|row| row.torque > 1.6)
+        .expect("rows");
+    assert!((row.source_to_sink.nominal / sweep.at_stated - 1.0).abs() < 1e-12);
+    let most = sweep.window.most().expect("strength is known");
+    let told = |torque: f64| {
+        let mut changed = sweep.clone();
+        changed.stated = torque;
+        report::torque(&changed)
+            .split_whitespace()
+            .collect::<Vec<_>>()
+            .join(" ")
+    };
+    let inside = 0.5 * (most.torque + sweep.window.least().expect("a load").torque);
+    assert!(told(inside).contains("N·m lies inside"), "{}", told(inside));
+    let beyond = told(1.01 * most.torque);
+    assert!(
+        beyond.contains(&format!("lies outside: beyond {}", most.name)),
+        "{beyond}"
+    );
+    assert!(
+        told(0.3).contains("lies outside: below separation"),
+        "{}",
+        told(0.3)
+    );
 }

@@ -373,6 +373,9 @@ impl From<Failure> for Trouble {
                 "state `require = { rise = \"10 K\" }` in [service], or ask `--for resistance`"
             }
             Failure::NoHeat => "state `heat` in [service]",
+            Failure::FromCoolant => {
+                "take the drop from sink surface to coolant, which `estimate` tells, off the limit, and leave `above` out"
+            }
             Failure::Size { .. } => {
                 "state what differs from the first fastener group: thread, hole, torque"
             }

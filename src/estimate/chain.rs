@@ -12,7 +12,7 @@ mod remade;
 mod temperatures;
 mod warmth;
 
-pub use draw::{DrawPlan, Drawn, Workspace};
+pub use draw::{Bend, DrawPlan, Drawn, Workspace};
 pub(crate) use levels::LARGE_ERROR;
 pub(in crate::estimate) use warmth::Warmth;
 

@@ -6,15 +6,18 @@ use crate::{
         registry::{self, Gravity},
     },
     estimate::{
-        Temperatures, TorqueWindow,
+        Bent, Met, RequirementResult, Temperatures, TorqueWindow,
         cautions::{FLATNESS_DECIDES, GAP_IGNORED},
     },
-    joint::{Joint, Limit, RequirementKind},
+    joint::{Joint, Limit},
     preload::Shared,
     resistance::Path,
 };
 
 /// Low, nominal and high of one number; low and high are absent when no draws were made.
+///
+/// Where faces may be bent either way, low and high are the lowest and the highest of the quantiles of
+/// every way.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Band {
     /// 5 % quantile, or the unfavourable corner for forces.
@@ -42,6 +45,16 @@ impl Band {
             low: self.low.map(|low| low * factor),
             nominal: self.nominal * factor,
             high: self.high.map(|high| high * factor),
+        }
+    }
+
+    /// Every number plus one.
+    #[must_use]
+    pub fn plus(&self, more: f64) -> Self {
+        Self {
+            low: self.low.map(|low| low + more),
+            nominal: self.nominal + more,
+            high: self.high.map(|high| high + more),
         }
     }
 
@@ -283,34 +296,10 @@ pub struct Rise {
     pub interface_drop: Band,
     /// Film drop from the sink surface to the coolant, where there is a film.
     pub coolant_drop: Option<f64>,
-    /// Its low and high, where its film is stated with a spread and no other takes heat beside it.
+    /// Its low and high, where a film or the heat is stated with a spread.
     pub coolant_drop_ends: Option<[f64; 2]>,
-}
-
-/// Whether a requirement is met.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
-pub enum Met {
-    /// Also at the unfavourable quantile.
-    Yes,
-    /// Not even at nominal.
-    No,
-    /// At nominal, but not at the unfavourable quantile, or no band was computed.
-    Uncertain,
-}
-
-/// A requirement and how the joint stands to it.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct RequirementResult {
-    /// The limited quantity.
-    pub kind: RequirementKind,
-    /// The limit, K, K/W or W/K.
-    pub limit: f64,
-    /// Side of the limit.
-    pub bound: Limit,
-    /// The value that is compared, unfavourable quantile where there is one.
-    pub value: f64,
-    /// The verdict.
-    pub met: Met,
+    /// Mean of the source and hottest point above the coolant, where there is a film.
+    pub above_coolant: Option<[Band; 2]>,
 }
 
 /// One thermal case: a sink temperature and everything that follows from it.
@@ -343,6 +332,9 @@ pub struct CaseResult {
     pub draw_error: Option<f64>,
     /// How well the draws know the ends of the bands; none without draws, and with too few to tell.
     pub sampling: Option<Sampling>,
+    /// Low and high of source to sink by the way the faces are bent, K/W; none where they are not bent by
+    /// themselves, and without draws.
+    pub bent: Option<Bent>,
     /// Area of the faying faces, m²; in a stack that of the first interface.
     pub footprint: f64,
     /// Temperature rises, when heat is stated.
@@ -548,16 +540,19 @@ pub struct TorqueSweep {
     pub stated: f64,
     /// Largest torque that passes every limit, N m, and the limit that ends it.
     pub largest: Option<(f64, &'static str)>,
-    /// Torque of the lowest source-to-sink resistance among those that strength allows, N m; of the
-    /// highest where the requirement asks for at least so much.
+    /// Torque of the lowest source-to-sink resistance among those that strength allows and separation asks
+    /// for, N m; of the highest where the requirement asks for at least so much.
     pub best: Option<f64>,
     /// The lowest point of the curve between swept torques, where it has one inside the window.
     pub minimum: Option<Minimum>,
     /// Source to sink at the stated torque itself, K/W.
     pub at_stated: f64,
-    /// The joint at the torque where strength ends, where that is the best and stands between two rows.
+    /// The joint at the torque where strength ends or separation begins, where that is the best and stands
+    /// between two rows.
     pub at_limit: Option<Minimum>,
-    /// Points, torque rising.
+    /// Whether faces may be bent either way, so that low and high hold for each.
+    pub bends: bool,
+    /// Points, torque rising, the stated torque among them where it lies in the range.
     pub points: Vec<TorquePoint>,
     /// Requirement in K/W of source to sink, where one can be put so.
     pub required: Option<(f64, Limit)>,

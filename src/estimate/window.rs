@@ -114,4 +114,30 @@ impl TorqueWindow {
             .find(|limit| limit.side == Side::Most)
             .copied()
     }
+
+    /// The least torque that keeps the faces together, N m.
+    pub fn least(&self) -> Option<TorqueLimit> {
+        self.limits
+            .iter()
+            .find(|limit| limit.side == Side::Least)
+            .copied()
+    }
+
+    /// Limits that a torque breaks, those from below first; of the others the nearest one first.
+    pub fn broken_at(&self, torque: f64) -> Vec<TorqueLimit> {
+        let breaks = |limit: &&TorqueLimit| match limit.side {
+            Side::Least => torque < limit.torque,
+            Side::Most => torque > limit.torque,
+        };
+        let mut broken: Vec<TorqueLimit> = self.limits.iter().filter(breaks).copied().collect();
+        broken.sort_by_key(|limit| limit.side == Side::Most);
+        broken
+    }
+
+    /// Whether a torque meets the requirement; none where nothing is required.
+    pub fn heat_met_at(&self, torque: f64) -> Option<bool> {
+        let ranges = self.heat.as_ref()?;
+        let holds = |range: &Range| range.low.torque <= torque && torque <= range.high.torque;
+        Some(ranges.iter().any(holds))
+    }
 }

@@ -146,6 +146,7 @@ fn sweep(stated: f64, largest: f64, required: f64, size: f64) -> TorqueSweep {
         best: Some(3.0),
         at_stated: 0.165,
         at_limit: None,
+        bends: false,
         minimum: None,
         points: (1..=20)
             .map(|k| {

@@ -125,6 +125,10 @@ pub enum RequirementKind {
     Rise,
     /// Hottest point of the first plate above the mean sink surface, K.
     HottestRise,
+    /// Mean source above the coolant, K.
+    AboveCoolant,
+    /// Hottest point of the first plate above the coolant, K.
+    HottestAboveCoolant,
     /// Mean temperature drop across the interface, K.
     InterfaceDrop,
     /// One of the results, as resistance, K/W.

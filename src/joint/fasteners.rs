@@ -286,9 +286,12 @@ fn engagement(
     }
     let length = match table.number("length") {
         Some(length) => {
-            if let Some([thickness, _]) = far.thickness_ends() {
+            if let Some([thickness, most]) = far.thickness_ends() {
                 let fits = length <= thickness * (1.0 + 1e-9);
-                collector.require(fits, || too_long(table, length, (&far.name, thickness)));
+                let spread = thickness < most;
+                collector.require(fits, || {
+                    too_long(table, (length, spread), (&far.name, thickness))
+                });
             }
             length
         }
@@ -318,18 +321,34 @@ fn engagement(
     })
 }
 
-/// A thread longer than the plate it is cut in.
-fn too_long(table: &Record, length: f64, (plate, thickness): (&str, f64)) -> Fault {
+/// A thread longer than the plate it is cut in, or than the thinnest that its spread allows.
+fn too_long(
+    table: &Record,
+    (length, spread): (f64, bool),
+    (plate, thickness): (&str, f64),
+) -> Fault {
     let thickness = units::show(thickness, Quantity::Length);
+    let (how, help) = if spread {
+        (
+            format!("may be as thin as {thickness} by the spread of its `thickness`"),
+            "leave `length` out: the thread then goes through the plate, as thick as it is; or state what the \
+             thinnest plate holds",
+        )
+    } else {
+        (
+            format!("is {thickness} thick"),
+            "the thread ends with the plate: state what is engaged in it",
+        )
+    };
     fault(
         "value/range",
         &table.span("length"),
         format!(
-            "{} of thread are engaged in plate `{}`, which is {thickness} thick",
+            "{} of thread are engaged in plate `{}`, which {how}",
             units::show(length, Quantity::Length),
             short(plate)
         ),
     )
     .expecting(format!("at most {thickness}"))
-    .help("the thread ends with the plate: state what is engaged in it")
+    .help(help)
 }

@@ -196,8 +196,8 @@ pub static SERVICE: Section = Section {
         .default("20 °C"),
         field(
             "heat",
-            Kind::Quantity(Quantity::Power),
-            "heat through the joint",
+            Kind::Spread(Measure::Quantity(Quantity::Power)),
+            "heat through the joint, or its range: it moves the rises; properties and sag are those of the nominal heat",
             "\"22 W\"",
         )
         .within(1e-12, 1e7)
@@ -285,6 +285,13 @@ pub static REQUIRE: Section = Section {
             "\"hottest\"",
         )
         .default("mean for a rise, source to sink otherwise"),
+        field(
+            "above",
+            Kind::Choice(&["sink surface", "coolant"]),
+            "from where a rise counts: the mean sink surface, or the coolant behind the films, which are all at one temperature",
+            "\"coolant\"",
+        )
+        .default("sink surface"),
         field(
             "bound",
             Kind::Choice(&["most", "least"]),

@@ -31,7 +31,7 @@ pub(super) fn read(
     let record = file.record("service")?;
     let medium = medium(record, collector);
     let temperatures = temperatures(record, (heat, back), collector);
-    let require = require(record, heating::states_heat(file), collector);
+    let require = require(file, record, collector);
     let (cases, assembly_temperature) = temperatures?;
     Some(Service {
         medium: medium?,
@@ -169,10 +169,11 @@ fn temperatures(
 /// The requirement: the outer option is none when it is faulty.
 #[expect(clippy::option_option, reason = "faulty and not stated are two things")]
 fn require(
+    file: &Record,
     record: &Record,
-    states_heat: bool,
     collector: &mut Collector,
 ) -> Option<Option<Requirement>> {
+    let states_heat = heating::states_heat(file);
     if !record.has("require") {
         return Some(None);
     }
@@ -221,7 +222,13 @@ fn require(
         "added by joint" => Plane::AddedByJoint,
         _ => Plane::SourceToSink,
     };
+    let from_coolant = table.text("above") == Some("coolant");
+    if from_coolant && !counts_from_coolant(table, (key, of), file, collector) {
+        return None;
+    }
     let kind = match (key, of) {
+        ("rise", "hottest") if from_coolant => RequirementKind::HottestAboveCoolant,
+        ("rise", "mean") if from_coolant => RequirementKind::AboveCoolant,
         ("rise", "hottest") => RequirementKind::HottestRise,
         ("rise", "interface") => RequirementKind::InterfaceDrop,
         ("rise", _) => RequirementKind::Rise,
@@ -237,4 +244,36 @@ fn require(
         limit: table.number(key)?,
         bound,
     }))
+}
+
+/// Whether a limit can count from the coolant: a rise above films, through which all heat leaves.
+fn counts_from_coolant(
+    table: &Record,
+    (key, of): (&str, &str),
+    file: &Record,
+    collector: &mut Collector,
+) -> bool {
+    let rise = key == "rise" && of != "interface";
+    collector.require(rise, || {
+        fault(
+            "file/conflict",
+            &table.span("above"),
+            "only a rise of the mean or the hottest counts from the coolant",
+        )
+        .expecting("expected without `above`")
+        .help("for example `require = { rise = \"35 K\", of = \"hottest\", above = \"coolant\" }`")
+    });
+    let last = file.records("plate").last();
+    let cooled = last.map_or(&[][..], |plate| plate.records("cooled"));
+    let films = !cooled.is_empty() && cooled.iter().all(|part| part.has("film"));
+    collector.require(films, || {
+        fault(
+            "file/conflict",
+            &table.span("above"),
+            "the limit counts from the coolant, and heat does not leave through films alone",
+        )
+        .expecting("expected `film` in every `cooled` of the last plate, or a limit above the sink surface")
+        .help("state the film: `cooled = { film = \"500 W/(m²·K)\" }`, or leave `above` out")
+    });
+    rise && films
 }

@@ -107,5 +107,9 @@ pub(super) fn stated(file: &Record, plates: &[String]) -> Vec<Uncertain> {
         service.and_then(|service| service.stated_spread("pressure")),
         What::GasPressure,
     );
+    take(
+        service.and_then(|service| service.stated_spread("heat")),
+        What::Heat,
+    );
     found
 }

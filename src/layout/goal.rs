@@ -117,6 +117,9 @@ impl Target {
             RequirementKind::HottestRise => {
                 (Measure::Hottest, require.limit / heat()?, require.bound)
             }
+            RequirementKind::AboveCoolant | RequirementKind::HottestAboveCoolant => {
+                return Err(Failure::FromCoolant);
+            }
             RequirementKind::InterfaceDrop => (
                 Measure::InterfaceDrop,
                 require.limit / heat()?,

@@ -77,7 +77,7 @@ pub fn text(ranking: &Ranking) -> String {
         Scale::Itself => format!("of the variance of {target}"),
     };
     for line in [
-        format!("share {scale}, ± its 95 % interval; of its own: what goes if this input alone is known; in total: what is left if all others are"),
+        format!("share {scale}, ± its 95 % interval (? where it is wider than the share); of its own: what goes if this input alone is known; in total: what is left if all others are"),
         format!("{} belongs to no input alone", percent(ranking.interaction)),
         "alone: this input at its 5 % and 95 %, all others nominal; known: the band if this input were known to be nominal".to_owned(),
         if ranking.interaction > MUCH {
@@ -85,6 +85,7 @@ pub fn text(ranking: &Ranking) -> String {
         } else {
             String::new()
         },
+        not_told_apart(ranking).unwrap_or_default(),
         draws(ranking),
     ] {
         if line.is_empty() {
@@ -94,6 +95,17 @@ pub fn text(ranking: &Ranking) -> String {
     }
     text.push_str(&remedies(ranking));
     text
+}
+
+/// Shares that rank nothing.
+pub(super) fn not_told_apart(ranking: &Ranking) -> Option<String> {
+    let inputs = ranking.not_told_apart();
+    (!inputs.is_empty()).then(|| {
+        format!(
+            "?: the interval is wider than the share, so that these cannot be told apart by it: {}; more `--draws` narrow it",
+            inputs.join(", ")
+        )
+    })
 }
 
 fn draws(ranking: &Ranking) -> String {
@@ -132,11 +144,16 @@ fn remedies(ranking: &Ranking) -> String {
 }
 
 /// A share in percent with its interval.
-fn share(share: &Share) -> String {
+pub(super) fn share(share: &Share) -> String {
     if share.value.is_finite() {
         // No minus before a zero.
         let tenth = |value: f64| (1000.0 * value).round() / 10.0 + 0.0;
-        format!("{:.1} ± {:.1}", tenth(share.value), tenth(share.confidence))
+        let doubt = if share.is_told() { "" } else { "?" };
+        format!(
+            "{:.1} ± {:.1}{doubt}",
+            tenth(share.value),
+            tenth(share.confidence)
+        )
     } else {
         "–".to_owned()
     }
@@ -184,6 +201,7 @@ pub fn json(ranking: &Ranking) -> Value {
                 "alone": input.alone,
                 "known": { "low": input.known.low, "high": input.known.high },
                 "narrowing": input.narrowing(&ranking.band),
+                "told_apart": input.index.total.is_told(),
                 "remedy": input.remedy,
             })
         }).collect::<Vec<Value>>(),

@@ -3,7 +3,7 @@
 use crate::{
     diagnostic::{Assumption, Caution},
     estimate::{
-        Band, BoltResult, CaseResult, Estimate, InterfaceResult, Met, PlaneResult,
+        Band, Bend, Bent, BoltResult, CaseResult, Estimate, InterfaceResult, Met, PlaneResult,
         RequirementResult, RingRow, Sampling, TorqueSweep, Worst,
     },
     joint::{Limit, Plane, RequirementKind},
@@ -108,6 +108,7 @@ fn case(case: &CaseResult) -> Map<String, Value> {
         ("numerical_error", json!(case.numerical_error)),
         ("draw_error", json!(case.draw_error)),
         ("sampling", case.sampling.as_ref().map_or(Value::Null, sampling)),
+        ("bent", case.bent.as_ref().map_or(Value::Null, bent)),
         ("rise", rise(case)),
         ("temperatures", temperatures::temperatures(case)),
         (
@@ -150,6 +151,14 @@ fn sampling(sampling: &Sampling) -> Value {
             json!({ "draws": point.draws, "low": point.low, "high": point.high })
         }).collect::<Vec<Value>>(),
     })
+}
+
+/// Ends by the way the faces are bent.
+fn bent(bent: &Bent) -> Value {
+    let ways = Bend::ALL.iter().zip(bent.0);
+    ways.map(|(way, [low, high])| (way.name().to_owned(), json!({ "low": low, "high": high })))
+        .collect::<Map<String, Value>>()
+        .into()
 }
 
 /// Resistances with every input at its unfavourable end, K/W.
@@ -225,6 +234,9 @@ fn rise(case: &CaseResult) -> Value {
             "interface_drop": band(&rise.interface_drop),
             "coolant_drop": rise.coolant_drop,
             "coolant_drop_ends": rise.coolant_drop_ends,
+            "above_coolant": rise.above_coolant.as_ref().map(|[source, hottest]| {
+                json!({ "source": band(source), "hottest": band(hottest) })
+            }),
         })
     })
 }
@@ -233,6 +245,8 @@ fn requirement(requirement: &RequirementResult) -> Value {
     let (kind, plane) = match requirement.kind {
         RequirementKind::Rise => ("rise", None),
         RequirementKind::HottestRise => ("hottest_rise", None),
+        RequirementKind::AboveCoolant => ("rise_above_coolant", None),
+        RequirementKind::HottestAboveCoolant => ("hottest_rise_above_coolant", None),
         RequirementKind::InterfaceDrop => ("interface_drop", None),
         RequirementKind::Resistance(plane) => ("resistance", Some(plane)),
         RequirementKind::Conductance(plane) => ("conductance", Some(plane)),
@@ -243,6 +257,11 @@ fn requirement(requirement: &RequirementResult) -> Value {
         "limit": requirement.limit,
         "bound": bound_key(requirement.bound),
         "value": requirement.value,
+        "bent": requirement.bent.as_ref().map_or(Value::Null, bent),
+        "held_against": requirement
+            .bent
+            .and_then(|bent| bent.worst(requirement.bound))
+            .map(Bend::name),
         "met": match requirement.met {
             Met::Yes => json!(true),
             Met::No => json!(false),
@@ -342,6 +361,15 @@ pub fn torque(sweep: &TorqueSweep) -> Value {
         "field": sweep.field,
         "resolution": sweep.resolution,
         "stated": sweep.stated,
+        "stated_stands": {
+            "inside": sweep
+                .window
+                .both
+                .map(|both| both.low.torque <= sweep.stated && sweep.stated <= both.high.torque),
+            "breaks": window::limits(&sweep.window.broken_at(sweep.stated)),
+            "requirement_met": sweep.window.heat_met_at(sweep.stated),
+        },
+        "bends": sweep.bends,
         "largest": sweep.largest.map(|(torque, limit)| json!({ "torque": torque, "limit": limit })),
         "best": sweep.best,
         "minimum": sweep.minimum.map(|minimum| json!({

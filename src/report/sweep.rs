@@ -105,18 +105,23 @@ pub fn torque(sweep: &TorqueSweep) -> String {
         text,
         "torque of {}; the other fasteners as stated; {} case\n\
          field {}, {}\n\
-         sink: source to sink; added: by the joint; contact: the faces alone, without spreading\n\n{table}",
+         sink: source to sink; added: by the joint; contact: the faces alone, without spreading\n{}\n{table}",
         plain(&sweep.group),
         sweep.case,
         sweep.field,
         sweep.resolution,
+        if sweep.bends {
+            "low and high hold for faces bent convex, flat and concave, since flatness leaves it open\n"
+        } else {
+            ""
+        },
     );
     let _ = writeln!(
         text,
         "stated   {} N·m{}",
         four(sweep.stated),
         if stated.is_some() {
-            " (the nearest torque is marked)"
+            " (marked)"
         } else {
             ", outside this range"
         }
@@ -171,7 +176,12 @@ fn advice(sweep: &TorqueSweep, best: Option<usize>) -> String {
             .to_owned();
     }
     let (Some(index), Some(torque)) = (best, sweep.best) else {
-        return "best     no torque of this range passes every strength limit\n".to_owned();
+        return if sweep.window.least().is_some() {
+            "best     no torque of this range passes every strength limit and keeps the faces together\n"
+        } else {
+            "best     no torque of this range passes every strength limit\n"
+        }
+        .to_owned();
     };
     let there = between_rows(sweep).map_or(sweep.points[index].source_to_sink.nominal, |found| {
         found.source_to_sink
@@ -222,8 +232,14 @@ fn remarks(sweep: &TorqueSweep, index: usize) -> Vec<&'static str> {
         lines.push(
             "found between the rows; below it the contact lacks force, beyond it the gap opens",
         );
-    } else if sweep.at_limit.is_some() {
-        lines.push("it is the limit of strength itself, between two rows");
+    } else if let Some(limit) = sweep.at_limit {
+        let least = sweep.window.least();
+        let least = least.is_some_and(|least| least.torque >= limit.torque);
+        lines.push(if least {
+            "it is the least torque that keeps the faces together: separation bounds it"
+        } else {
+            "it is the limit of strength itself, between two rows"
+        });
     } else if index == 0 && sweep.points.len() > 1 {
         lines.push(if sweep.resists() {
             "it is the first torque swept: less resists more, and what the bolts must hold decides"

@@ -95,6 +95,7 @@ pub(super) fn lines(sweep: &TorqueSweep) -> Vec<String> {
                 .to_owned(),
         );
     }
+    lines.push(stated(sweep));
     if let Some(knee) = window.knee {
         lines.push(format!(
             "knee {} N·m: there the joint's own conductance has 90 % of what it can reach",
@@ -138,6 +139,60 @@ fn first(window: &TorqueWindow) -> String {
         named(&both, both.low.by),
         named(&both, both.high.by)
     )
+}
+
+/// How the stated torque stands to the window: inside, or on which side of which limit.
+fn stated(sweep: &TorqueSweep) -> String {
+    let (window, torque) = (&sweep.window, sweep.stated);
+    let told = format!("the stated torque of {} N·m lies", four(torque));
+    let mut against: Vec<String> = Vec::new();
+    let broken = window.broken_at(torque);
+    against.extend(broken.iter().map(|limit| match limit.side {
+        Side::Least => format!(
+            "below {}, which asks for at least {} N·m",
+            limit.name,
+            four(limit.torque)
+        ),
+        Side::Most => format!("beyond {}, at {} N·m", limit.name, four(limit.torque)),
+    }));
+    let swept = sweep.points.first().zip(sweep.points.last());
+    let swept = swept.is_some_and(|(first, last)| (first.torque..=last.torque).contains(&torque));
+    match window.heat_met_at(torque) {
+        // What was not swept is not known.
+        Some(false) if swept => against.push(missed(window, torque)),
+        Some(_) if !swept => against.push("not swept, so that its heat is not judged".to_owned()),
+        _ => {}
+    }
+    if window.most().is_none() {
+        against.push("without a known limit of strength".to_owned());
+    }
+    match against.as_slice() {
+        [] => format!("{told} inside"),
+        _ => format!("{told} outside: {}", against.join("; ")),
+    }
+}
+
+/// On which side of the torques that meet the requirement a torque lies.
+fn missed(window: &TorqueWindow, torque: f64) -> String {
+    let ranges = || window.heat.iter().flatten();
+    let above = ranges().find(|range| range.low.torque > torque);
+    let below = ranges().rfind(|range| range.high.torque < torque);
+    match (below, above) {
+        (None, Some(above)) => format!(
+            "below the requirement, met from {} N·m",
+            four(above.low.torque)
+        ),
+        (Some(below), None) => format!(
+            "beyond the requirement, met up to {} N·m",
+            four(below.high.torque)
+        ),
+        (Some(below), Some(above)) => format!(
+            "the requirement is missed there, met up to {} and from {} N·m",
+            four(below.high.torque),
+            four(above.low.torque)
+        ),
+        (None, None) => "the requirement is missed there as at every torque swept".to_owned(),
+    }
 }
 
 fn span(range: &Range) -> String {

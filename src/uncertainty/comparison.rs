@@ -2,7 +2,7 @@
 
 use rayon::prelude::*;
 
-use super::{Input, inputs, sweep::required, worst_case};
+use super::{Input, inputs, requirement::required, worst_case};
 use crate::{
     estimate::{Chain, Estimate, Failure, Loss, Options, Realisation},
     joint::{Limit, Mass},

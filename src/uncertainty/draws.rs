@@ -3,9 +3,11 @@
 use rayon::prelude::*;
 
 use crate::{
-    estimate::{Band, Chain, DrawPlan, Drawn, Failure, Options, Realisation},
+    estimate::{
+        Band, Bend, Bent, Chain, DrawPlan, Drawn, Failure, Options, Realisation, Workspace,
+    },
     numerics::sampling::{Missed, REACH, Sobol, Tail},
-    uncertainty::{Answer, Input, QUANTILES, inputs, shares::Shares},
+    uncertainty::{Answer, BENDING, Input, QUANTILES, inputs, shares::Shares},
 };
 
 /// Scramblings among which the draws are divided, where there are draws enough.
@@ -23,13 +25,21 @@ const TOGETHER: usize = 1024;
 /// draws, and the spread of the quantiles of the scramblings is its sampling error. Any number of
 /// draws is as unbiased; the error is least where every scrambling has a power of two.
 /// Answers are not kept, so that memory hardly grows with the number of draws.
+///
+/// Which way faces are bent whose flatness is a height alone is one fact about the joint that nobody
+/// knows, not one that differs from draw to draw: drawn by a coin, the worse way would hold the end of
+/// the band in half of the draws only. Every draw is read convex, flat and concave, and the band reaches
+/// from the lowest of the three lower ends to the highest of the three upper ones, so that it holds its
+/// share of the draws whichever way the faces are.
+/// Checked: `the_band_holds_its_share_whichever_way_faces_are_bent`.
 pub struct Draws {
     /// Inputs that were moved.
     pub(super) inputs: Vec<Input>,
     /// How source to sink goes with each of them.
     pub(super) shares: Shares,
     scrambles: usize,
-    ends: Vec<(Answer, [End; 2])>,
+    /// One band, or one for each way faces may be bent.
+    ends: Vec<(Answer, Vec<[End; 2]>)>,
 }
 
 /// One end of a band.
@@ -88,6 +98,14 @@ fn scrambles(draws: usize) -> usize {
 }
 
 impl Task<'_> {
+    /// Ways in which every draw is read: one, or each in which the faces may be bent.
+    fn ways(&self) -> usize {
+        let mut inputs = self.inputs.iter().enumerate();
+        let bends =
+            inputs.any(|(index, input)| input.name == BENDING && !self.known.contains(&index));
+        if bends { Bend::ALL.len() } else { 1 }
+    }
+
     /// The draws.
     pub(super) fn drawn(&self) -> Result<Draws, Failure> {
         // What lies outside the reach of the first scrambling is looked for once more, everywhere.
@@ -101,29 +119,33 @@ impl Task<'_> {
     fn within(&self, reach: f64) -> Result<Result<Draws, Missed>, Failure> {
         let count = self.options.draws as usize;
         let scrambles = scrambles(count);
+        let ways = self.ways();
+        let answers = self.answers.iter();
+        let sought: Vec<(Answer, usize)> = answers
+            .flat_map(|answer| (0..ways).map(|way| (*answer, way)))
+            .collect();
         let mut tails: Vec<[Tail; 2]> = Vec::new();
         let mut shares = Shares::of(self.inputs.len());
         for scramble in 0..scrambles {
             let size = count / scrambles + usize::from(scramble < count % scrambles);
             let drawn = self.scramble((scramble, size), &mut shares)?;
-            let part = |answer: &Answer| -> Vec<f64> {
-                drawn.iter().map(|drawn| answer.of(drawn)).collect()
+            let part = |(answer, way): &(Answer, usize)| -> Vec<f64> {
+                drawn[*way].iter().map(|drawn| answer.of(drawn)).collect()
             };
             if tails.is_empty() {
-                tails = self
-                    .answers
+                tails = sought
                     .par_iter()
-                    .map(|answer| {
-                        let values = part(answer);
+                    .map(|sought| {
+                        let values = part(sought);
                         self.quantiles.map(|p| Tail::around(p, &values, reach))
                     })
                     .collect();
             }
             let taken: Result<Vec<()>, Missed> = tails
                 .par_iter_mut()
-                .zip(self.answers)
-                .map(|(tails, answer)| {
-                    let values = part(answer);
+                .zip(&sought)
+                .map(|(tails, sought)| {
+                    let values = part(sought);
                     tails.iter_mut().try_for_each(|tail| tail.take(&values))
                 })
                 .collect();
@@ -131,9 +153,13 @@ impl Task<'_> {
                 return Ok(Err(missed));
             }
         }
-        let ends = self.answers.iter().zip(&tails).map(|(answer, tails)| {
-            let [low, high] = tails.each_ref().map(|tail| End::of(tail, scrambles));
-            Ok((*answer, [low?, high?]))
+        let ends = self.answers.iter().zip(tails.chunks(ways));
+        let ends = ends.map(|(answer, tails)| {
+            let each = tails.iter().map(|tails| {
+                let [low, high] = tails.each_ref().map(|tail| End::of(tail, scrambles));
+                Ok([low?, high?])
+            });
+            Ok((*answer, each.collect::<Result<Vec<[End; 2]>, Missed>>()?))
         });
         Ok(ends.collect::<Result<_, Missed>>().map(|ends| Draws {
             inputs: self.inputs.to_vec(),
@@ -143,12 +169,13 @@ impl Task<'_> {
         }))
     }
 
-    /// The draws of one scrambling, in the order of its points.
+    /// The draws of one scrambling, way by way in the order of its points.
     fn scramble(
         &self,
         (scramble, size): (usize, usize),
         shares: &mut Shares,
-    ) -> Result<Vec<Drawn>, Failure> {
+    ) -> Result<Vec<Vec<Drawn>>, Failure> {
+        let ways = self.ways();
         let sobol = Sobol::replicate(self.inputs.len(), self.options.seed, scramble);
         let starts: Vec<usize> = (0..size).step_by(TOGETHER).collect();
         let done = starts
@@ -161,27 +188,48 @@ impl Task<'_> {
                     let mut sums = Shares::of(self.inputs.len());
                     let mut readings = vec![0.0; self.inputs.len()];
                     let count = TOGETHER.min(size - start);
-                    let mut found = Vec::with_capacity(count);
+                    let mut found: Vec<Vec<Drawn>> =
+                        (0..ways).map(|_| Vec::with_capacity(count)).collect();
                     for _ in 0..count {
                         walk.next_into(&mut point);
                         let at = placed(self.inputs, &point, self.known);
-                        let drawn = self.plan.drawn(&at, workspace)?;
+                        let whole = self.read(&at, workspace, &mut found)?;
                         for (reading, input) in readings.iter_mut().zip(self.inputs) {
                             *reading = (input.reading)(&at);
                         }
-                        sums.take(&readings, drawn.source_to_sink.ln());
-                        found.push(drawn);
+                        sums.take(&readings, whole.ln());
                     }
                     Ok((found, sums))
                 },
             )
-            .collect::<Result<Vec<(Vec<Drawn>, Shares)>, Failure>>()?;
-        let mut all = Vec::with_capacity(size);
+            .collect::<Result<Vec<(Vec<Vec<Drawn>>, Shares)>, Failure>>()?;
+        let mut all: Vec<Vec<Drawn>> = (0..ways).map(|_| Vec::with_capacity(size)).collect();
         for (found, sums) in done {
-            all.extend(found);
+            for (all, found) in all.iter_mut().zip(found) {
+                all.extend(found);
+            }
             shares.add(&sums);
         }
         Ok(all)
+    }
+
+    /// Reads a draw in every way; gives source to sink as it is bent itself, K/W.
+    fn read(
+        &self,
+        at: &Realisation,
+        workspace: &mut Workspace,
+        found: &mut [Vec<Drawn>],
+    ) -> Result<f64, Failure> {
+        if let [only] = found {
+            let drawn = self.plan.drawn(at, workspace)?;
+            only.push(drawn);
+            return Ok(drawn.source_to_sink);
+        }
+        let drawn = self.plan.drawn_bent(at, workspace)?;
+        for (found, drawn) in found.iter_mut().zip(drawn) {
+            found.push(drawn);
+        }
+        Ok(drawn[Bend::of(at.flatness) as usize].source_to_sink)
     }
 }
 
@@ -220,7 +268,7 @@ impl Draws {
         self.scrambles
     }
 
-    fn ends(&self, answer: Answer) -> &[End; 2] {
+    fn ends(&self, answer: Answer) -> &[[End; 2]] {
         let found = self.ends.iter().find(|(each, _)| *each == answer);
         &found
             .expect("an answer is read only where it was asked for")
@@ -229,26 +277,53 @@ impl Draws {
 
     /// The band of an answer around its nominal value; it always holds the nominal.
     pub fn band(&self, answer: Answer, nominal: f64) -> Band {
-        let [low, high] = self.ends(answer).each_ref().map(|end| end.value);
+        let ends = self.ends(answer).iter();
+        let [low, high] = ends.fold([nominal; 2], |[least, most], [low, high]| {
+            [low.value.min(least), high.value.max(most)]
+        });
         Band {
-            low: Some(low.min(nominal)),
+            low: Some(low),
             nominal,
-            high: Some(high.max(nominal)),
+            high: Some(high),
+        }
+    }
+
+    /// The ends by the way the faces are bent, as drawn; none where they are not bent by themselves.
+    pub fn bent(&self, answer: Answer) -> Option<Bent> {
+        let values = |ends: &[End; 2]| ends.each_ref().map(|end| end.value);
+        match self.ends(answer) {
+            [convex, flat, concave] => Some(Bent([convex, flat, concave].map(values))),
+            _ => None,
         }
     }
 
     /// Standard error of both ends of a band; none where the scramblings are too few to tell.
     pub fn errors(&self, answer: Answer) -> Option<[f64; 2]> {
-        let [low, high] = self.ends(answer);
+        let ends = || self.ends(answer).iter();
+        let low = ends().map(|[low, _]| low);
+        let low = low.min_by(|one, other| one.value.total_cmp(&other.value))?;
+        let high = ends().map(|[_, high]| high);
+        let high = high.max_by(|one, other| one.value.total_cmp(&other.value))?;
         Some([low.error?, high.error?])
     }
 
-    /// Both quantiles after a fourth, a half and all of the draws.
+    /// Both ends after a fourth, a half and all of the draws.
     pub fn course(&self, answer: Answer) -> Vec<(usize, [f64; 2])> {
-        let [low, high] = self.ends(answer);
-        let pairs = low.course.iter().zip(&high.course);
-        pairs
-            .map(|((count, low), (_, high))| (*count, [*low, *high]))
+        let ends = self.ends(answer);
+        let parts = ends.first().map_or(0, |[low, _]| low.course.len());
+        (0..parts)
+            .map(|part| {
+                let each = ends
+                    .iter()
+                    .map(|ends| ends.each_ref().map(|end| end.course[part]));
+                let mut count = 0;
+                let none = [f64::INFINITY, f64::NEG_INFINITY];
+                let reached = each.fold(none, |[least, most], [(draws, low), (_, high)]| {
+                    count = draws;
+                    [least.min(low), most.max(high)]
+                });
+                (count, reached)
+            })
             .collect()
     }
 }

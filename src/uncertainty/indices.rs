@@ -22,6 +22,16 @@ pub struct Share {
     pub confidence: f64,
 }
 
+impl Share {
+    /// Whether the share is more than its interval leaves open; an index that is nothing exactly is known.
+    pub fn is_told(&self) -> bool {
+        self.value.abs() > self.confidence || self.confidence < Self::NOTHING
+    }
+
+    /// Interval that is no question to anybody: a tenth of what a table prints.
+    const NOTHING: f64 = 1e-4;
+}
+
 /// Indices of one group of inputs.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Index {

@@ -198,8 +198,11 @@ const FIELD: Known = Known {
     place: |at, u| at.field = even(u),
     reading: |at| at.field,
 };
+/// Name of the input that stands for the way faces are bent, and how much.
+pub const BENDING: &str = "flatness, convex or concave";
+
 const FLATNESS: Known = Known {
-    name: "flatness, convex or concave",
+    name: BENDING,
     remedy: "measure the faces and state bow or flatness_map, or call out a closer flatness",
     place: |at, u| at.flatness = even(u),
     reading: |at| at.flatness,
@@ -340,6 +343,10 @@ fn stated(joint: &Joint, index: usize) -> Input {
             "film of the sink",
             "measure the film on a heated dummy in the flow of service, or hold the flow closer",
         ),
+        What::Heat => (
+            HEAT,
+            "measure the heat, or state the range of service more closely",
+        ),
         What::GasPressure => (
             "pressure of the gas",
             "measure or hold the pressure of service",
@@ -355,6 +362,8 @@ fn stated(joint: &Joint, index: usize) -> Input {
     }
 }
 
+/// Name of the input that stands for a heat stated with a spread.
+pub const HEAT: &str = "heat";
 /// Name of the input that stands for the error of the grid.
 pub const NUMERICAL: &str = "numerical error";
 

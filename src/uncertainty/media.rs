@@ -35,14 +35,17 @@ pub fn in_media(
             let there = chain.in_medium(medium.clone())?;
             let path = there.state(0, &Realisation::default())?.path;
             let (whole, added) = (path.source_to_sink, path.added_by_joint);
+            let mut risen = Band::nominal(whole);
             let (source_to_sink, added_by_joint) = if options.draws == 0 {
                 (Band::nominal(whole), Band::nominal(added))
             } else {
-                let draws = draws(
-                    &there,
-                    (0, &[Answer::SourceToSink, Answer::AddedByJoint]),
-                    options,
-                )?;
+                let asked = [
+                    Answer::SourceToSink,
+                    Answer::AddedByJoint,
+                    Answer::SourceRise,
+                ];
+                let draws = draws(&there, (0, &asked), options)?;
+                risen = draws.band(Answer::SourceRise, whole);
                 (
                     draws.band(Answer::SourceToSink, whole),
                     draws.band(Answer::AddedByJoint, added),
@@ -50,7 +53,7 @@ pub fn in_media(
             };
             Ok(InMedium {
                 medium: medium.clone(),
-                rise: heat.map(|heat| source_to_sink.times(heat)),
+                rise: heat.map(|heat| risen.times(heat)),
                 source_to_sink,
                 added_by_joint,
             })

@@ -3,7 +3,7 @@
 use crate::{
     estimate::{Band, Chain, DrawPlan, Failure, Options, Realisation, Workspace},
     uncertainty::{
-        Answer, Bases, Index, Input, QUANTILES,
+        Answer, Bases, HEAT, Index, Input, QUANTILES,
         draws::{Task, placed},
         indices, inputs,
         remedies::remedy,
@@ -48,7 +48,8 @@ impl Target {
 
     fn answer(self) -> Answer {
         match self {
-            Self::SourceToSink | Self::Rise => Answer::SourceToSink,
+            Self::SourceToSink => Answer::SourceToSink,
+            Self::Rise => Answer::SourceRise,
             Self::Contact => Answer::Contact,
             Self::AddedByJoint => Answer::AddedByJoint,
             Self::NodeToNode => Answer::NodeToNode,
@@ -90,7 +91,8 @@ pub struct Ranking {
     pub interaction: f64,
     /// Whether the shares are those of the logarithm of the answer.
     pub scale: Scale,
-    /// The inputs, the one first whose knowledge narrows the band most.
+    /// The inputs, the one first whose knowledge narrows the band most; of those that do so alike the ones
+    /// first whose share is told.
     pub inputs: Vec<Ranked>,
 }
 
@@ -127,6 +129,17 @@ pub struct Ranked {
     pub known: Band,
 }
 
+impl Ranking {
+    /// Inputs whose share in total is not told apart from nothing, nor from each other.
+    pub fn not_told_apart(&self) -> Vec<&'static str> {
+        let inputs = self.inputs.iter();
+        inputs
+            .filter(|each| !each.index.total.is_told())
+            .map(|each| each.input)
+            .collect()
+    }
+}
+
 impl Ranked {
     /// Share of the width of the band that goes when this input is known; negative where the nominal
     /// value is one at which the others do more.
@@ -148,7 +161,9 @@ pub fn ranking(chain: &Chain, options: &RankingOptions) -> Result<Ranking, Failu
     let joint = chain.joint();
     let case = worst_case(chain)?;
     let plan = chain.draw_plan(case)?;
-    let inputs = inputs(chain);
+    let mut inputs = inputs(chain);
+    // Heat moves no resistance.
+    inputs.retain(|input| options.target == Target::Rise || input.name != HEAT);
     let heat = match options.target {
         Target::Rise => joint.service.heat.unwrap_or(f64::NAN),
         _ => 1.0,
@@ -177,12 +192,15 @@ pub fn ranking(chain: &Chain, options: &RankingOptions) -> Result<Ranking, Failu
     }
     let first: f64 = ranked.iter().map(|each| each.index.first.value).sum();
     let band = asked.band(nominal, &[])?;
-    // A variance may be that of few extreme draws; what a reader buys is a narrower band.
+    // A variance may be that of few extreme draws; what a reader buys is a narrower band. Below a part in
+    // a hundred of it bands are alike, and a share that its interval does not tell ranks nothing.
     ranked.sort_by(|one, other| {
-        let narrowing = |each: &Ranked| each.narrowing(&band);
+        let narrowing = |each: &Ranked| (100.0 * each.narrowing(&band)).round();
+        let told = |each: &Ranked| each.index.total.is_told();
         let total = |each: &Ranked| each.index.total.value;
         narrowing(other)
             .total_cmp(&narrowing(one))
+            .then(told(other).cmp(&told(one)))
             .then(total(other).total_cmp(&total(one)))
     });
     Ok(Ranking {

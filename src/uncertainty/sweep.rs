@@ -2,15 +2,16 @@
 
 use crate::{
     estimate::{
-        self, Band, CaseResult, Chain, Failure, LARGE_ERROR, Minimum, Options, TorquePoint,
+        self, Band, CaseResult, Chain, Failure, LARGE_ERROR, Minimum, Options, Side, TorquePoint,
         TorqueSweep,
     },
-    joint::{Joint, Limit, Plane, RequirementKind, Tightening},
+    joint::{Joint, Limit, Tightening},
 };
 
 use super::{
     Alternative, Answer,
     minimum::minimum,
+    requirement::{asked, required},
     window::{Rows, Sought, window},
 };
 
@@ -23,7 +24,7 @@ pub struct SweepOptions {
     pub from: Option<f64>,
     /// Highest torque, N m; past the stated and the largest torque when absent.
     pub to: Option<f64>,
-    /// Number of torques, at least two.
+    /// Number of torques evenly from lowest to highest, at least two; the stated torque comes on top.
     pub steps: usize,
     /// Share of the draws that every band holds, about the middle: 0.9 from 5 % to 95 %.
     pub confidence: f64,
@@ -100,17 +101,20 @@ pub fn sweep_beside(
         case,
         range: [from, to],
     };
-    let rows = (0..options.steps)
-        .map(|step| from + (to - from) * step as f64 / (options.steps - 1) as f64)
+    let rows = torques([from, to], (options.steps, stated))
+        .into_iter()
         .map(|torque| point(&sought, torque))
         .collect::<Result<Vec<(TorquePoint, Option<f64>)>, Failure>>()?;
     let (points, excess): (Vec<TorquePoint>, Vec<Option<f64>>) = rows.into_iter().unzip();
     let required = required(joint);
+    let limits = chain.torque_limits(options.group);
+    let least = limits.iter().find(|limit| limit.side == Side::Least);
+    let least = least.map(|limit| limit.torque);
     let minimum = match required {
         Some((_, Limit::Least)) => None,
         _ if chain.knows_the_gap() => {
-            let window = (points.as_slice(), largest.map(|(torque, _)| torque));
-            minimum(chain, (options.group, case), window)?
+            let ends = [least, largest.map(|(torque, _)| torque)];
+            minimum(chain, (options.group, case), (points.as_slice(), ends))?
         }
         _ => None,
     };
@@ -137,13 +141,15 @@ pub fn sweep_beside(
     };
     let row = match minimum {
         Some(minimum) => Some(minimum.torque),
-        None => best_of(&points, required),
+        None => best_of(&points, (least, required)),
     };
-    let at_limit = match (minimum, row, largest) {
-        (None, Some(row), Some((largest, _))) if ends_the_window(&points, (row, largest)) => {
-            Some(at(largest)?).filter(|limit| better(limit, (&points, row), required))
-        }
-        _ => None,
+    let at_limit = if minimum.is_some() {
+        None
+    } else {
+        let ends = [least, largest.map(|(largest, _)| largest)];
+        let ends = ends_beside(&points, (row, ends)).into_iter().map(at);
+        let ends = ends.collect::<Result<Vec<Minimum>, Failure>>()?;
+        best_end(&ends, (&points, row), required)
     };
     let best = at_limit.map(|limit| limit.torque).or(row);
     let mut sweep = TorqueSweep {
@@ -159,6 +165,7 @@ pub fn sweep_beside(
         required,
         window,
         case: joint.service.cases[case].name,
+        bends: chain.knows_the_gap() && joint.most_loose_flatness() > 0.0,
         field: chain.field_name(),
         resolution: chain.resolution_name(),
         cautions,
@@ -171,38 +178,86 @@ pub fn sweep_beside(
     Ok(sweep)
 }
 
-/// The swept torque of least resistance that strength allows; of most where the joint is to resist.
-fn best_of(points: &[TorquePoint], required: Option<(f64, Limit)>) -> Option<f64> {
+/// Even torques of a range, and the stated one among them where it lies inside.
+fn torques([from, to]: [f64; 2], (steps, stated): (usize, f64)) -> Vec<f64> {
+    /// Nearer to a row than this part of a step, the stated torque is that row.
+    const SAME: f64 = 1e-6;
+    let step = (to - from) / (steps - 1) as f64;
+    let even = |index: usize| from + (to - from) * index as f64 / (steps - 1) as f64;
+    let mut found: Vec<f64> = (0..steps).map(even).collect();
+    let inside = from < stated && stated < to;
+    if inside && found.iter().all(|each| (each - stated).abs() > SAME * step) {
+        let place = found.partition_point(|each| *each < stated);
+        found.insert(place, stated);
+    }
+    found
+}
+
+/// The swept torque of least resistance that strength allows and separation asks for; of most where the
+/// joint is to resist.
+fn best_of(
+    points: &[TorquePoint],
+    (least, required): (Option<f64>, Option<(f64, Limit)>),
+) -> Option<f64> {
     let sign = match required {
         Some((_, Limit::Least)) => -1.0,
         _ => 1.0,
     };
     let key = |point: &TorquePoint| sign * point.source_to_sink.nominal;
-    let allowed = points.iter().filter(|point| point.passes);
+    let holds = |point: &&TorquePoint| least.is_none_or(|least| point.torque >= least);
+    let allowed = points.iter().filter(|point| point.passes).filter(holds);
     let best = allowed.min_by(|one, other| key(one).total_cmp(&key(other)));
     best.map(|point| point.torque)
 }
 
-/// Whether a row is the last that strength allows, with the largest torque between it and the next.
-fn ends_the_window(points: &[TorquePoint], (row, largest): (f64, f64)) -> bool {
+/// The ends of what separation and strength allow that lie between the best row and the next one beyond;
+/// both where no row lies between them.
+fn ends_beside(
+    points: &[TorquePoint],
+    (row, [least, largest]): (Option<f64>, [Option<f64>; 2]),
+) -> Vec<f64> {
+    let Some(row) = row else {
+        let swept = |torque: &f64| {
+            let (first, last) = (points.first(), points.last());
+            first.is_some_and(|first| first.torque <= *torque)
+                && last.is_some_and(|last| *torque <= last.torque)
+        };
+        return match (least, largest) {
+            (Some(least), Some(largest)) if least < largest => {
+                [least, largest].into_iter().filter(swept).collect()
+            }
+            _ => Vec::new(),
+        };
+    };
+    let before = points.iter().rfind(|point| point.torque < row);
     let next = points.iter().find(|point| point.torque > row);
-    next.is_some_and(|next| !next.passes && row < largest && largest < next.torque)
+    let least =
+        least.filter(|least| before.is_some_and(|before| before.torque < *least && *least < row));
+    let largest = largest.filter(|largest| {
+        next.is_some_and(|next| !next.passes && row < *largest && *largest < next.torque)
+    });
+    least.into_iter().chain(largest).collect()
 }
 
-/// Whether the joint stands better at the limit of strength than at a row.
-fn better(
-    limit: &Minimum,
-    (points, row): (&[TorquePoint], f64),
+/// The end of separation or strength at which the joint stands best; none where a row is better.
+fn best_end(
+    ends: &[Minimum],
+    (points, row): (&[TorquePoint], Option<f64>),
     required: Option<(f64, Limit)>,
-) -> bool {
-    let there = points.iter().find(|point| point.torque >= row);
-    there.is_some_and(|there| {
-        let gain = there.source_to_sink.nominal - limit.source_to_sink;
-        match required {
-            Some((_, Limit::Least)) => gain < 0.0,
-            _ => gain > 0.0,
-        }
-    })
+) -> Option<Minimum> {
+    let sign = match required {
+        Some((_, Limit::Least)) => -1.0,
+        _ => 1.0,
+    };
+    let key = |end: &&Minimum| sign * end.source_to_sink;
+    let best = ends
+        .iter()
+        .min_by(|one, other| key(one).total_cmp(&key(other)))?;
+    let row = points
+        .iter()
+        .find(|point| row.is_some_and(|row| point.torque >= row));
+    let better = row.is_none_or(|row| key(&best) < sign * row.source_to_sink.nominal);
+    better.then_some(*best)
 }
 
 /// The case in which the joint stands worst: of most resistance, or of least where the requirement
@@ -238,7 +293,7 @@ fn point(sought: &Sought<'_>, torque: f64) -> Result<(TorquePoint, Option<f64>),
     let strength = chain.strength(options.group);
     let draws = match options.chain.draws {
         0 => None,
-        _ => Some(sought.drawn(&chain, &Answer::ALL)?),
+        _ => Some(sought.drawn(&chain, &asked(chain.joint()))?),
     };
     let band = |answer: Answer| {
         let value = answer.of(&nominal);
@@ -256,19 +311,4 @@ fn point(sought: &Sought<'_>, torque: f64) -> Result<(TorquePoint, Option<f64>),
     };
     let excess = sought.excess(&nominal, draws.as_ref());
     Ok((point, excess))
-}
-
-/// The requirement as a source-to-sink resistance, where it can be put so.
-pub(super) fn required(joint: &Joint) -> Option<(f64, Limit)> {
-    let require = joint.service.require?;
-    let flipped = match require.bound {
-        Limit::Most => Limit::Least,
-        Limit::Least => Limit::Most,
-    };
-    match require.kind {
-        RequirementKind::Rise => Some((require.limit / joint.service.heat?, require.bound)),
-        RequirementKind::Resistance(Plane::SourceToSink) => Some((require.limit, require.bound)),
-        RequirementKind::Conductance(Plane::SourceToSink) => Some((require.limit.recip(), flipped)),
-        _ => None,
-    }
 }

@@ -8,11 +8,12 @@ use crate::{
         Band, Chain, Drawn, End, Failure, Range, Realisation, Side, TorqueLimit, TorquePoint,
         TorqueWindow,
     },
-    joint::{Limit, Plane, Requirement, RequirementKind},
+    joint::{Limit, Plane, RequirementKind},
     numerics::roots,
     uncertainty::{
         Answer, Draws, SweepOptions,
         draws::draws_between,
+        requirement::limited,
         sweep::Others,
         trials::{alternatives, trials},
     },
@@ -55,8 +56,7 @@ impl Sought<'_> {
     /// where it is met. None where nothing is required, or it needs heat and none is stated.
     pub(super) fn excess(&self, nominal: &Drawn, draws: Option<&Draws>) -> Option<f64> {
         let require = self.chain.joint().service.require?;
-        let heat = self.chain.joint().service.heat;
-        let (answer, scale) = limited(require, heat)?;
+        let (answer, scale) = limited(self.chain.joint())?;
         let value = answer.of(nominal);
         let band = draws.map_or(Band::nominal(value), |draws| draws.band(answer, value));
         let [low, high] = scale.of([band.low.unwrap_or(value), band.high.unwrap_or(value)]);
@@ -87,9 +87,7 @@ impl Sought<'_> {
     pub(super) fn excess_at(&self, torque: f64) -> Result<f64, Failure> {
         let chain = self.at(torque)?;
         let nominal = chain.nominal_answers(self.case)?;
-        let require = self.chain.joint().service.require;
-        let limited = require.and_then(|require| limited(require, self.chain.joint().service.heat));
-        let drawn = match (self.options.chain.draws, limited) {
+        let drawn = match (self.options.chain.draws, limited(self.chain.joint())) {
             (0, _) | (_, None) => None,
             (_, Some((answer, _))) => Some(self.drawn(&chain, &[answer])?),
         };
@@ -190,18 +188,25 @@ impl Sought<'_> {
         }
     }
 
-    /// Least resistance that the joint can add within strength: at the rows that pass, at the minimum
-    /// between them and at the largest torque.
+    /// Least resistance that the joint can add within separation and strength: at the rows that pass, at
+    /// the minimum between them and at both ends.
     fn attainable(
         &self,
         points: &[TorquePoint],
-        (largest, minimum): (Option<f64>, Option<f64>),
+        ([least, largest], minimum): ([Option<f64>; 2], Option<f64>),
     ) -> Result<Option<f64>, Failure> {
-        let rows = points.iter().filter(|point| point.passes);
+        let holds = |point: &&TorquePoint| least.is_none_or(|least| point.torque >= least);
+        let rows = points.iter().filter(|point| point.passes).filter(holds);
         let mut added: Vec<f64> = rows.map(|point| point.added_by_joint.nominal).collect();
         added.extend(minimum);
-        if let Some(largest) = largest.filter(|torque| self.is_swept(*torque)) {
-            added.push(self.added_at(largest)?);
+        let ends = match (least, largest) {
+            (Some(least), Some(largest)) if least > largest => [None; 2],
+            ends => ends.into(),
+        };
+        for end in ends.into_iter().flatten() {
+            if self.is_swept(end) {
+                added.push(self.added_at(end)?);
+            }
         }
         Ok(added.into_iter().min_by(f64::total_cmp))
     }
@@ -239,7 +244,9 @@ pub(super) fn window(
     let attainable = if resists {
         None
     } else {
-        sought.attainable(rows.points, (most, rows.minimum.map(|(_, added)| added)))?
+        let least = limits.iter().find(|limit| limit.side == Side::Least);
+        let ends = [least.map(|limit| limit.torque), most];
+        sought.attainable(rows.points, (ends, rows.minimum.map(|(_, added)| added)))?
     };
     let heat = ranges(sought, rows, &limits)?;
     let both = joined(strength, heat.as_deref());
@@ -390,40 +397,4 @@ fn larger(thread: &Thread, ratio: f64) -> Option<String> {
         .filter(|each| each.diameter > thread.diameter && each.stress_area >= wanted)
         .min_by(|one, other| one.stress_area.total_cmp(&other.stress_area))
         .map(|each| each.name.clone())
-}
-
-/// The limited quantity over the answer it is read from.
-#[derive(Clone, Copy, Debug)]
-enum Over {
-    /// So many times the answer.
-    Times(f64),
-    /// Its inverse.
-    Inverse,
-}
-
-impl Over {
-    /// Low and high of the quantity from those of the answer.
-    fn of(self, [low, high]: [f64; 2]) -> [f64; 2] {
-        match self {
-            Self::Times(factor) => [factor * low, factor * high],
-            Self::Inverse => [high.recip(), low.recip()],
-        }
-    }
-}
-
-/// The answer from which a limited quantity is read; none where it needs heat and none is stated.
-fn limited(require: Requirement, heat: Option<f64>) -> Option<(Answer, Over)> {
-    let answer = |plane: Plane| match plane {
-        Plane::Contact => Answer::Contact,
-        Plane::NodeToNode => Answer::NodeToNode,
-        Plane::AddedByJoint => Answer::AddedByJoint,
-        Plane::SourceToSink => Answer::SourceToSink,
-    };
-    Some(match require.kind {
-        RequirementKind::Rise => (Answer::SourceToSink, Over::Times(heat?)),
-        RequirementKind::HottestRise => (Answer::Hottest, Over::Times(heat?)),
-        RequirementKind::InterfaceDrop => (Answer::InterfaceDrop, Over::Times(heat?)),
-        RequirementKind::Resistance(plane) => (answer(plane), Over::Times(1.0)),
-        RequirementKind::Conductance(plane) => (answer(plane), Over::Inverse),
-    })
 }

@@ -144,7 +144,8 @@ fn ranking_finds_what_drives_the_contact() {
     assert_eq!(field.known, found.band);
     for pair in found.inputs.windows(2) {
         let narrowing = |at: usize| pair[at].narrowing(&found.band);
-        assert!(narrowing(0) >= narrowing(1), "{pair:?}");
+        // Rounded to a part in a hundred of the band, below which shares decide.
+        assert!(narrowing(0) + 0.01 >= narrowing(1), "{pair:?}");
     }
     for input in &found.inputs {
         let (first, total) = (input.index.first, input.index.total);

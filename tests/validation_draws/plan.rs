@@ -85,6 +85,8 @@ fn plan_follows(chain: &Chain, count: u32, what: &str) {
                 perfect_contact: path.perfect_contact,
                 hottest: path.hottest,
                 interface_drop: path.interface_drop,
+                coolant_drop: path.coolant_drop.unwrap_or(0.0),
+                heat: 1.0,
             };
             // Means of plates may lie near nothing: their scale is that of source to sink.
             let pairs = found.all().into_iter().zip(wanted.all());

@@ -155,7 +155,7 @@ pub(super) const ENTRIES: &[Entry] = &[
             "Bow, map, sag or stated flatness leaves a gap that is more than a quarter wider than that \
              between flat faces (judgement). A known shape is part of the solved field and of its \
              numbers. Flatness stated as a height alone has no shape: nominal takes flat faces, low \
-             and high take them convex and concave. Waves shorter than the plate and twist are in \
+             and high hold for them convex, flat and concave. Waves shorter than the plate and twist are in \
              neither.",
             "State the measured shape as `bow` or `flatness_map`. Stiffer bolts, a bolt in the middle, \
              flatter faces or a filler thicker than the gap close it.",

@@ -108,7 +108,12 @@ impl ConeModel {
             return Ok(None);
         };
         if slot.get().is_none() {
-            let nominal: f64 = chain.nominal_forces(case, chain.joint()).iter().sum();
+            let forces = chain.nominal_forces(case, chain.joint());
+            let nominal: f64 = forces.iter().sum();
+            // Forces are counted over the nominal one.
+            if nominal <= 0.0 {
+                return Err(chain.open(case, &forces));
+            }
             let beside = Beside {
                 model: self,
                 chain,

@@ -28,6 +28,55 @@ pub struct Drawn {
     pub hottest: f64,
     /// Mean drop across the faying faces.
     pub interface_drop: f64,
+    /// From the mean sink surface to the coolant; 0 without a film.
+    pub coolant_drop: f64,
+    /// Heat over the nominal heat, 1.
+    pub heat: f64,
+}
+
+/// Which way faces are bent whose flatness is stated as a height alone.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Bend {
+    /// They meet in the middle and stand open at the edge.
+    Convex,
+    /// Not at all.
+    Flat,
+    /// They meet at the edge and stand open in the middle.
+    Concave,
+}
+
+impl Bend {
+    /// Every way, in the order in which draws tell them.
+    pub const ALL: [Self; 3] = [Self::Convex, Self::Flat, Self::Concave];
+
+    /// The way in which a draw is bent, by its place of flatness.
+    pub fn of(place: f64) -> Self {
+        if place < 0.0 {
+            Self::Convex
+        } else if place > 0.0 {
+            Self::Concave
+        } else {
+            Self::Flat
+        }
+    }
+
+    /// Its name for people.
+    pub fn name(self) -> &'static str {
+        match self {
+            Self::Convex => "convex",
+            Self::Flat => "flat",
+            Self::Concave => "concave",
+        }
+    }
+
+    /// Place of flatness of so much bending.
+    pub(super) fn place(self, height: f64) -> f64 {
+        match self {
+            Self::Convex => -height,
+            Self::Flat => 0.0,
+            Self::Concave => height,
+        }
+    }
 }
 
 /// One case of a chain, compiled for its draws.
@@ -48,6 +97,8 @@ pub struct DrawPlan<'a> {
     case: usize,
     outlook: Outlook<'a>,
     field: Field<'a>,
+    /// Whether heat or films scatter.
+    heat_scatters: bool,
 }
 
 /// What stands for the field.
@@ -96,6 +147,7 @@ impl Chain<'_> {
             case,
             outlook,
             field,
+            heat_scatters: self.joint.scatters_heat(),
         })
     }
 }
@@ -119,12 +171,50 @@ impl DrawPlan<'_> {
             (Field::Cone, Model::Elastic(_)) => unreachable!("the plan is of this chain"),
         };
         if found.is_sound() {
-            return Ok(found);
+            return Ok(self.heated(found, at));
         }
         // The chain itself knows what may be infinite, and names what may not.
-        self.chain
-            .state(self.case, at)
-            .map(|state| Drawn::of(&state.path))
+        let state = self.chain.state(self.case, at)?;
+        Ok(self.heated(Drawn::of(&state.path), at))
+    }
+
+    /// With the heat and the films of a draw.
+    fn heated(&self, drawn: Drawn, at: &Realisation) -> Drawn {
+        if !self.heat_scatters {
+            return drawn;
+        }
+        let joint = self.chain.joint();
+        Drawn {
+            heat: joint.heat_factor(&at.stated),
+            coolant_drop: drawn.coolant_drop * joint.coolant_factor(&at.stated),
+            ..drawn
+        }
+    }
+}
+
+impl DrawPlan<'_> {
+    /// The resistances at a realisation with its faces bent every way ([`Bend::ALL`]) by as much as there.
+    pub fn drawn_bent(
+        &self,
+        at: &Realisation,
+        workspace: &mut Workspace,
+    ) -> Result<[Drawn; 3], Failure> {
+        if let Field::Elastic(plan) = &self.field {
+            let conditions = &mut workspace.0;
+            self.outlook.put(at, conditions);
+            let found = plan.drawn_bent(conditions, at);
+            if found.iter().all(Drawn::is_sound) {
+                return Ok(found.map(|drawn| self.heated(drawn, at)));
+            }
+        }
+        let [convex, flat, concave] = Bend::ALL.map(|bend| {
+            let bent = Realisation {
+                flatness: bend.place(at.flatness.abs()),
+                ..at.clone()
+            };
+            self.drawn(&bent, workspace)
+        });
+        Ok([convex?, flat?, concave?])
     }
 }
 
@@ -143,7 +233,7 @@ impl DrawPlan<'_> {
 }
 
 impl Drawn {
-    /// All, in the order of the fields.
+    /// The resistances that the field tells, in the order of the fields.
     pub fn all(&self) -> [f64; 7] {
         [
             self.contact,
@@ -182,6 +272,7 @@ impl Drawn {
             perfect_contact: self.perfect_contact * factor,
             hottest: self.hottest * factor,
             interface_drop: self.interface_drop * factor,
+            ..self
         }
     }
 

@@ -157,7 +157,8 @@ impl Remade {
         let (first, weights) = parabola(&self.forces, force);
         for axis in &self.axes {
             let place = places.get(axis.index).copied().unwrap_or(0.0);
-            if place == 0.0 {
+            // A spread within rounding has one node alone.
+            if place == 0.0 || axis.nodes.len() < 3 {
                 continue;
             }
             let x = axis.scale.put(axis.bounds.at(place));

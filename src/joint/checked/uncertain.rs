@@ -1,7 +1,7 @@
 //! Values that the file states with a spread of their own, and how bolts scatter together.
 
 use crate::joint::{
-    Bounds, CooledPart, Cooling, Engagement, Facing, FillerKind, Joint, Medium, Sink,
+    Bounds, CooledPart, Cooling, Engagement, Facing, FillerKind, Joint, Medium, Sink, Zone,
 };
 
 /// Lengths nearer to each other than this are one, relative.
@@ -39,6 +39,8 @@ pub enum What {
     Film(usize),
     /// Absolute pressure of the gas.
     GasPressure,
+    /// Heat of the joint.
+    Heat,
 }
 
 impl What {
@@ -240,6 +242,60 @@ impl Joint {
         self.uncertain
             .iter()
             .any(|each| matches!(each.what, What::Flatness(of, _) if of == plate))
+    }
+
+    /// Heat at the places of its spread over the nominal one, 1.
+    pub fn heat_factor(&self, places: &[f64]) -> f64 {
+        let heat = self.service.heat.zip(self.stated(What::Heat, places));
+        heat.map_or(1.0, |(nominal, there)| there / nominal)
+    }
+
+    /// Drop to the coolant at the places of the films over that at nominal, 1.
+    ///
+    /// ```text
+    /// ΔT = Q/Σ h A
+    /// ```
+    ///
+    /// All heat `Q` crosses the films `h` on areas `A`, and the mean sink surface is weighted with what it
+    /// conducts, so that this holds however the heat divides. Holes in the back are left out of the areas,
+    /// which divide among several films alone.
+    /// Checked: `films_side_by_side_drop_as_their_sum`.
+    pub fn coolant_factor(&self, places: &[f64]) -> f64 {
+        let zones: Vec<(f64, f64)> = match &self.sink {
+            Cooling::Whole(Sink::Film(coefficient)) => vec![(*coefficient, 1.0)],
+            Cooling::Whole(_) => return 1.0,
+            Cooling::Parts(parts) => parts
+                .iter()
+                .filter_map(|part| match part {
+                    CooledPart::Film { zone, coefficient } => {
+                        Some((*coefficient, self.cooled_area(*zone)))
+                    }
+                    _ => None,
+                })
+                .collect(),
+        };
+        let (mut nominal, mut there) = (0.0, 0.0);
+        for (number, (coefficient, area)) in zones.into_iter().enumerate() {
+            let drawn = self.stated(What::Film(number), places);
+            nominal += coefficient * area;
+            there += drawn.unwrap_or(coefficient) * area;
+        }
+        if there > 0.0 { nominal / there } else { 1.0 }
+    }
+
+    fn cooled_area(&self, zone: Zone) -> f64 {
+        match zone {
+            Zone::Face => self.cold().outline.area(),
+            Zone::Rectangle { size, .. } => size[0] * size[1],
+            Zone::Disc { radius, .. } => std::f64::consts::PI * radius * radius,
+        }
+    }
+
+    /// Whether heat or films are stated with a spread, so that temperatures scatter by themselves.
+    pub fn scatters_heat(&self) -> bool {
+        self.uncertain
+            .iter()
+            .any(|each| matches!(each.what, What::Heat | What::Film(_)) && each.bounds.is_spread())
     }
 
     /// Whether gas stands in any interface.

@@ -1,7 +1,7 @@
 //! The torque window and what a load along the bolts does, as JSON.
 
 use crate::{
-    estimate::{End, Judged, Range, Side, TorqueWindow},
+    estimate::{End, Judged, Range, Side, TorqueLimit, TorqueWindow},
     joint::Bounds,
     preload::Shared,
 };
@@ -9,16 +9,6 @@ use serde_json::{Value, json};
 
 /// The torques that heat and strength allow, N m; `both` is null where there is no window.
 pub(super) fn window(window: &TorqueWindow) -> Value {
-    let limits = window.limits.iter().map(|limit| {
-        json!({
-            "name": limit.name,
-            "torque": limit.torque,
-            "side": match limit.side {
-                Side::Least => "least",
-                Side::Most => "most",
-            },
-        })
-    });
     let trials = window.trials.iter().map(|trial| {
         json!({
             "change": trial.change,
@@ -37,7 +27,7 @@ pub(super) fn window(window: &TorqueWindow) -> Value {
     json!({
         "confidence": window.confidence,
         "knee": window.knee,
-        "limits": limits.collect::<Value>(),
+        "limits": limits(&window.limits),
         "strength": window.strength.as_ref().map(range),
         "heat": window.heat.as_ref().map(|heat| heat.iter().map(range).collect::<Value>()),
         "both": window.both.as_ref().map(range),
@@ -47,6 +37,21 @@ pub(super) fn window(window: &TorqueWindow) -> Value {
         "larger_thread": window.larger_thread,
         "trials": trials.collect::<Value>(),
     })
+}
+
+/// Limits of the torque, N m.
+pub(super) fn limits(limits: &[TorqueLimit]) -> Value {
+    let limits = limits.iter().map(|limit| {
+        json!({
+            "name": limit.name,
+            "torque": limit.torque,
+            "side": match limit.side {
+                Side::Least => "least",
+                Side::Most => "most",
+            },
+        })
+    });
+    limits.collect()
 }
 
 fn range(range: &Range) -> Value {

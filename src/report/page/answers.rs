@@ -8,6 +8,7 @@ use crate::{
     estimate::{Driver, TorqueSweep},
     report::{
         comparison::strength,
+        drivers::{not_told_apart, share},
         number::{band, four, optional, percent},
         page::{
             results::sentence,
@@ -15,7 +16,7 @@ use crate::{
         },
         window,
     },
-    uncertainty::{Comparison, Ranking, Share},
+    uncertainty::{Comparison, Ranking},
 };
 
 /// The torque window.
@@ -141,10 +142,11 @@ pub(super) fn drivers(ranking: Option<&Ranking>, drivers: &[Driver]) -> Table {
         let mut table = Table::new(
             "",
             format!(
-                "Inputs by their share in the variance of {}, {} case, ± its 95 % interval; if known: the band if the input were known to be nominal; {} of the variance belongs to no input alone",
+                "Inputs by their share in the variance of {}, {} case, ± its 95 % interval; if known: the band if the input were known to be nominal; {} of the variance belongs to no input alone{}",
                 ranking.target.name(),
                 ranking.case,
-                percent(ranking.interaction)
+                percent(ranking.interaction),
+                not_told_apart(ranking).map_or_else(String::new, |told| format!("; {told}"))
             ),
             vec![
                 words("input"),
@@ -156,12 +158,11 @@ pub(super) fn drivers(ranking: Option<&Ranking>, drivers: &[Driver]) -> Table {
             ],
         );
         for input in &ranking.inputs {
-            let share = input.index.total.value;
-            if share >= WORTH_A_ROW {
+            if input.index.total.value >= WORTH_A_ROW {
                 table.row(vec![
                     input.input.to_owned(),
-                    interval(&input.index.first),
-                    interval(&input.index.total),
+                    share(&input.index.first),
+                    share(&input.index.total),
                     optional(input.known.low),
                     optional(input.known.high),
                     input.remedy.clone(),
@@ -187,13 +188,6 @@ pub(super) fn drivers(ranking: Option<&Ranking>, drivers: &[Driver]) -> Table {
         ]);
     }
     table
-}
-
-/// A share in percent with its interval.
-fn interval(share: &Share) -> String {
-    // No minus before a zero.
-    let tenth = |value: f64| (1000.0 * value).round() / 10.0 + 0.0;
-    format!("{:.1} ± {:.1}", tenth(share.value), tenth(share.confidence))
 }
 
 /// The joint and its variants.

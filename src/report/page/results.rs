@@ -10,7 +10,7 @@ use crate::{
         media::vacuum_over,
         number::{band, four, inverse, optional, percent, spread},
         page::table::{Table, numbers, words},
-        text::thermal::{ICE_POINT, required},
+        text::thermal::{ICE_POINT, bent, required},
     },
     uncertainty::InMedium,
 };
@@ -195,8 +195,12 @@ fn told(estimate: &Estimate, case: &CaseResult) -> Vec<String> {
             four(rise.interface_drop.nominal)
         ));
         if let Some(drop) = rise.coolant_drop {
+            let ends = rise.coolant_drop_ends;
+            let ends = ends.map_or_else(String::new, |[low, high]| {
+                format!(" ({} to {})", four(low), four(high))
+            });
             told.push(format!(
-                "From sink surface to coolant: {} K more.",
+                "From sink surface to coolant: {}{ends} K more.",
                 four(drop)
             ));
         }
@@ -204,6 +208,7 @@ fn told(estimate: &Estimate, case: &CaseResult) -> Vec<String> {
     if let Some(result) = &case.requirement {
         told.push(sentence(&required(result, estimate.draws)));
     }
+    told.extend(bent(case).map(|told| sentence(&told)));
     if let Some(worst) = case.worst {
         let [least, most] = worst.source_to_sink;
         told.push(format!(

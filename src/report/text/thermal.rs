@@ -1,7 +1,9 @@
 //! The thermal part of the report: results with their planes, verdict, cases, drivers.
 
 use crate::{
-    estimate::{Band, CaseResult, Checkpoint, Driver, Estimate, Met, RequirementResult, Sampling},
+    estimate::{
+        Band, Bend, CaseResult, Checkpoint, Driver, Estimate, Met, RequirementResult, Sampling,
+    },
     joint::{Limit, Plane, RequirementKind},
     report::{
         number::{band, four, inverse, optional, percent, spread, wrapped},
@@ -78,7 +80,26 @@ pub fn results(estimate: &Estimate, case: &CaseResult) -> String {
     text.push_str(&scaled(case));
     text.push_str(&bounds(case));
     text.push_str(&case.sampling.as_ref().map_or_else(String::new, sampling));
+    if let Some(told) = bent(case) {
+        let _ = writeln!(text, "{}", wrapped(&told, WIDTH, 2));
+    }
     text
+}
+
+/// Source to sink by the way the faces are bent, where that is worth a word.
+pub(in crate::report) fn bent(case: &CaseResult) -> Option<String> {
+    let bent = case.bent?;
+    [Limit::Most, Limit::Least]
+        .into_iter()
+        .find_map(|bound| bent.worst(bound))?;
+    let ways = Bend::ALL
+        .iter()
+        .zip(bent.0)
+        .map(|(way, [low, high])| format!("{} {} to {}", way.name(), four(low), four(high)));
+    Some(format!(
+        "flatness leaves open which way faces are bent, low and high hold for each: source to sink {} K/W",
+        ways.collect::<Vec<String>>().join(", ")
+    ))
 }
 
 /// How the ends of source to sink settle with the draws, with one standard error.
@@ -214,6 +235,11 @@ pub(in crate::report) fn required(requirement: &RequirementResult, draws: u32) -
     let (quantity, unit) = match requirement.kind {
         RequirementKind::Rise => ("rise above the sink surface".to_owned(), "K"),
         RequirementKind::HottestRise => ("rise of the hottest point".to_owned(), "K"),
+        RequirementKind::AboveCoolant => ("rise above the coolant".to_owned(), "K"),
+        RequirementKind::HottestAboveCoolant => (
+            "rise of the hottest point above the coolant".to_owned(),
+            "K",
+        ),
         RequirementKind::InterfaceDrop => ("drop across the faces".to_owned(), "K"),
         RequirementKind::Resistance(plane) => (format!("resistance {}", plane_name(plane)), "K/W"),
         RequirementKind::Conductance(plane) => {
@@ -236,9 +262,23 @@ pub(in crate::report) fn required(requirement: &RequirementResult, draws: u32) -
         }
     };
     format!(
-        "requirement: {quantity} {bound} {} {unit}: {verdict}",
-        four(requirement.limit)
+        "requirement: {quantity} {bound} {} {unit}: {verdict}{}",
+        four(requirement.limit),
+        held_against(requirement).unwrap_or_default()
     )
+}
+
+/// Against which way of the faces a requirement is held, where that makes a difference.
+fn held_against(requirement: &RequirementResult) -> Option<String> {
+    let bent = requirement.bent?;
+    let worst = bent.worst(requirement.bound)?;
+    let ends = bent.unfavourable(requirement.bound);
+    let ends = ends.map(|(way, end)| format!("{} {}", way.name(), four(end)));
+    Some(format!(
+        " (faces {}; held against {})",
+        ends.join(", "),
+        worst.name()
+    ))
 }
 
 fn plane_name(plane: Plane) -> &'static str {

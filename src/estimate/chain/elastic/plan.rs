@@ -7,7 +7,7 @@ use crate::{
         Chain, Failure, Realisation,
         chain::{
             conditions::{Conditions, Outlook},
-            draw::Drawn,
+            draw::{Bend, Drawn},
             elastic::{
                 ElasticModel,
                 flat::Flat,
@@ -99,6 +99,28 @@ impl ElasticPlan<'_> {
         conditions: &Conditions,
         at: &Realisation,
     ) -> Drawn {
+        let (moved, force) = self.unformed(conditions, at);
+        moved
+            .with_form(self.spread.form(force, [at.field, self.flatness(at)]))
+            .with_error(at.numerical)
+    }
+
+    /// The same with the faces bent every way by as much as in the draw.
+    pub(in crate::estimate::chain) fn drawn_bent(
+        &self,
+        conditions: &Conditions,
+        at: &Realisation,
+    ) -> [Drawn; 3] {
+        let (moved, force) = self.unformed(conditions, at);
+        let height = self.flatness(at).abs();
+        let places = Bend::ALL.map(|bend| bend.place(height));
+        self.spread
+            .forms(force, (at.field, places))
+            .map(|form| moved.with_form(form).with_error(at.numerical))
+    }
+
+    /// The resistances before the model form, with the force over the nominal one as a logarithm.
+    fn unformed(&self, conditions: &Conditions, at: &Realisation) -> (Drawn, f64) {
         let to = self.spread.gauge.departure(conditions);
         let open = self.spread.response.open.as_ref();
         let shift = self.spread.shift((&conditions.forces, to[0]), &at.stated);
@@ -110,9 +132,7 @@ impl ElasticPlan<'_> {
                 there[reading] + shift[reading]
             }))
         };
-        moved
-            .with_form(self.spread.form(to[0], [at.field, self.flatness(at)]))
-            .with_error(at.numerical)
+        (moved, to[0])
     }
 
     /// The path moved to other readings: that of `Response::applied`.
@@ -164,6 +184,7 @@ impl Drawn {
             node_to_node: share(self.node_to_node, node),
             interface_drop: share(self.interface_drop, interface),
             hottest: share(self.hottest, hottest),
+            ..*self
         }
     }
 
@@ -177,6 +198,8 @@ impl Drawn {
             perfect_contact: path.perfect_contact,
             hottest: path.hottest,
             interface_drop: path.interface_drop,
+            coolant_drop: path.coolant_drop.unwrap_or(0.0),
+            heat: 1.0,
         }
     }
 }

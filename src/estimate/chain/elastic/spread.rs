@@ -75,8 +75,19 @@ impl Spread {
 
     /// Factor on what the joint adds at a force, by the places of the model form and of flatness.
     pub(super) fn form(&self, force: f64, [form, flatness]: [f64; 2]) -> f64 {
+        let [factor] = self.forms(force, (form, [flatness]));
+        factor
+    }
+
+    /// The same at several places of flatness.
+    pub(super) fn forms<const N: usize>(
+        &self,
+        force: f64,
+        (form, flatness): (f64, [f64; N]),
+    ) -> [f64; N] {
         let bounds = self.bounds_at(force);
-        between(bounds.form, form) * bounds.bent_by(flatness, self.highest)
+        let form = between(bounds.form, form);
+        flatness.map(|place| form * bounds.bent_by(place, self.highest))
     }
 
     /// The bounds as data.
