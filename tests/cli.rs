@@ -4,6 +4,8 @@
 mod batch;
 #[path = "cli/compare.rs"]
 mod compare;
+#[path = "cli/demos.rs"]
+mod demos;
 #[path = "cli/drivers.rs"]
 mod drivers;
 #[path = "cli/fields.rs"]
@@ -58,9 +60,9 @@ fn without_arguments_three_lines_lead_to_a_result() {
         .assert()
         .code(0)
         .stdout_eq(str![[r"
-ringsum new joint.toml         writes a starter joint to edit
-ringsum estimate joint.toml    tells its thermal resistance: low, nominal, high
-ringsum --help                 lists every command
+ringsum new --from-demo sensor_lid | ringsum estimate -   tells a resistance: low, nominal, high
+ringsum new joint.toml                                    writes a starter joint to edit
+ringsum --help                                            lists every command
 
 "]])
         .stderr_eq("");
