@@ -23,6 +23,7 @@ mod new;
 mod output;
 mod report;
 mod results;
+mod shown;
 mod torque;
 
 use crate::cli::console::{Color, Console, Outcome, Trouble};

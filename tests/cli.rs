@@ -10,8 +10,12 @@ mod demos;
 mod drivers;
 #[path = "cli/fields.rs"]
 mod fields;
+#[path = "cli/handover.rs"]
+mod handover;
 #[path = "cli/tables.rs"]
 mod tables;
+#[path = "cli/units.rs"]
+mod units;
 
 use snapbox::{
     cmd::{Command, OutputAssert, cargo_bin},

@@ -7,6 +7,7 @@ use crate::{
         console::{Console, Layout as Lines, Outcome, Trouble},
         drawings, field, input,
         output::{self, Existing, Target},
+        shown::Shown,
     },
     figures::{ArrangePlot, Drawing, Format},
     joint::{self, Joint},
@@ -66,6 +67,8 @@ pub struct Arrange {
     /// Threads [default: all cores]; they change no digit
     #[arg(long, value_name = "N", value_parser = clap::value_parser!(u32).range(1..=1024))]
     jobs: Option<u32>,
+    #[command(flatten)]
+    shown: Shown,
     /// Print JSON, in SI
     #[arg(long)]
     json: bool,
@@ -172,7 +175,7 @@ impl Arrange {
         if self.json {
             console.json(&arrange::json(&answer, &defaults), Lines::Indented)?;
         } else {
-            console.result(&arrange::answer(&answer, &defaults))?;
+            console.result(&arrange::answer_in(&answer, &defaults, self.shown.system()))?;
         }
         self.write_files(&read, &answer, console)?;
         Ok(match ended {

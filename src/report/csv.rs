@@ -1,9 +1,11 @@
 //! Results as rows of one table, for spreadsheets: SI, unrounded, comma separated (RFC 4180).
 
 mod drivers;
+mod maps;
 mod torques;
 
 pub use drivers::{DRIVERS, drivers};
+pub use maps::{Condition, map, nodes};
 pub use torques::{TORQUES, torques};
 
 use crate::{
