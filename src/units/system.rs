@@ -161,7 +161,7 @@ impl System {
     /// A text for people with every number that SI prints a unit behind told in this system.
     ///
     /// `0.3 to 2 µm`, `12.3 (10 to 14) kN` and `x 12, y 30 mm` are one group of numbers with one
-    /// unit. Digits stay as many as were printed, two at least. A number whose unit is not known is
+    /// unit. Digits stay as many as were printed, two at least and four at most. A number whose unit is not known is
     /// left as it stands, with its unit.
     ///
     /// ```
@@ -299,11 +299,11 @@ fn decimals(written: &str) -> usize {
         .map_or(0, |(_, places)| places.len())
 }
 
-/// Digits that a written number has, two at least.
+/// Digits that a written number has, two at least and four at most.
 fn significant(written: &str) -> usize {
     let mantissa = written.split('e').next().unwrap_or(written);
     let digits: String = mantissa.chars().filter(char::is_ascii_digit).collect();
-    digits.trim_start_matches('0').len().max(2)
+    digits.trim_start_matches('0').len().clamp(2, 4)
 }
 
 /// A number with so many significant digits.
@@ -375,6 +375,7 @@ mod tests {
             ("gas at 101.3 kPa", "gas at 14.69 psi"),
             ("5678 W/(m²·K), then", "1000 Btu/(h·ft²·°F), then"),
             ("170 W/(m·K)", "98.2 Btu/(h·ft·°F)"),
+            ("189000 W/(m²·K)", "33280 Btu/(h·ft²·°F)"),
             ("23.6 µm/(m·K)", "13.1 µin/(in·°F)"),
             ("64.52 cm² of", "10.00 in² of"),
             ("0.5 K·cm²/W", "0.078 °C·in²/W"),
