@@ -144,7 +144,7 @@ mod tests {
         for entry in fs::read_dir("joints").unwrap() {
             let path = entry.unwrap().path();
             let name = path.file_name().unwrap().to_string_lossy().into_owned();
-            if !name.ends_with(".json") {
+            if path.extension().is_some_and(|ending| ending != "json") {
                 kept.insert(name, fs::read_to_string(&path).unwrap());
             }
         }

@@ -48,7 +48,7 @@ pub struct Draw {
     /// Interface that the maps show, counted from 1 at the warm side
     #[arg(long, value_name = "N", default_value_t = 1)]
     interface: usize,
-    /// Write the maps as tables too, SI: map_N_CASE.csv of every interface N in every case
+    /// Write the maps as tables too, SI: one CSV of every interface in every case
     #[arg(long)]
     maps: bool,
     #[command(flatten)]

@@ -79,10 +79,9 @@ impl List {
 fn meant(first: &str, words: &str) -> String {
     let all = catalogue::listings();
     let kinds: Vec<String> = all.iter().map(|each| each.kind.to_owned()).collect();
-    if first == words || words.starts_with(&format!("{first} ")) {
-        if let Some(near) = chain::nearest(first, &kinds) {
-            return format!("did you mean the kind `{near}`?");
-        }
+    let leads = first == words || words.starts_with(&format!("{first} "));
+    if let Some(near) = chain::nearest(first, &kinds).filter(|_| leads) {
+        return format!("did you mean the kind `{near}`?");
     }
     let items = all.iter().flat_map(|each| &each.items);
     let mut records: Vec<String> = items

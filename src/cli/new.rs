@@ -74,7 +74,7 @@ impl New {
         let name = input::name(&path);
         let mut told = format!("wrote {name}");
         for (target, _) in &files[1..] {
-            told.push_str(&format!(" and {}", target.path.display()));
+            told = format!("{told} and {}", target.path.display());
         }
         console.message(&format!("{told}; next: ringsum estimate {name}\n"));
         Ok(Outcome::Done)

@@ -19,7 +19,7 @@ pub struct Shown {
 
 #[derive(Clone, Copy, Debug, PartialEq, Eq, ValueEnum)]
 enum Units {
-    /// mm, µm, N·m, kN, MPa, °C
+    /// mm, µm, N·m, kN, `MPa`, °C
     Si,
     /// As si, with N/mm² and bar
     Shop,

@@ -8,7 +8,7 @@ use crate::units::symbols;
 /// resistances in °C/W also where lengths are in inches, and a kelvin is a degree Celsius there.
 #[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
 pub enum System {
-    /// SI with its prefixes: mm, µm, N·m, kN, MPa, °C.
+    /// SI with its prefixes: mm, µm, N·m, kN, `MPa`, °C.
     #[default]
     Si,
     /// As on metric shop floors: stress in N/mm², pressure of gas in bar, the rest as SI.
@@ -350,7 +350,7 @@ mod tests {
             );
         }
         assert_eq!(System::Shop.unit(Shown::Pressure).name, "N/mm²");
-        assert_eq!(System::Shop.unit(Shown::GasPressure).size, 1e5);
+        assert_eq!(System::Shop.unit(Shown::GasPressure).name, "bar");
     }
 
     #[test]
