@@ -7,6 +7,7 @@ mod chain;
 mod check;
 mod compare;
 mod console;
+mod demos;
 mod draw;
 mod drawings;
 mod draws;
@@ -22,6 +23,7 @@ mod new;
 mod output;
 mod report;
 mod results;
+mod shown;
 mod torque;
 
 use crate::cli::console::{Color, Console, Outcome, Trouble};
@@ -30,9 +32,9 @@ use std::{ffi::OsString, io, process::ExitCode};
 
 /// What a bare `ringsum` says: three lines that lead to a result.
 const FIRST_STEPS: &str = "\
-ringsum new joint.toml         writes a starter joint to edit
-ringsum estimate joint.toml    tells its thermal resistance: low, nominal, high
-ringsum --help                 lists every command
+ringsum new --from-demo sensor_lid | ringsum estimate -   tells a resistance: low, nominal, high
+ringsum new joint.toml                                    writes a starter joint to edit
+ringsum --help                                            lists every command
 ";
 
 const EXIT_CODES: &str = "\

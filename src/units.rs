@@ -11,9 +11,11 @@ mod number;
 mod roughness;
 mod show;
 mod symbols;
+mod system;
 
 pub use roughness::{RMS_OVER_MEAN, RZ_OVER_RA, Roughness, parse_roughness};
 pub use show::show;
+pub use system::{Shown, System, Unit};
 
 use crate::units::{
     dimension::Dimension,

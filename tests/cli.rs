@@ -4,12 +4,18 @@
 mod batch;
 #[path = "cli/compare.rs"]
 mod compare;
+#[path = "cli/demos.rs"]
+mod demos;
 #[path = "cli/drivers.rs"]
 mod drivers;
 #[path = "cli/fields.rs"]
 mod fields;
+#[path = "cli/handover.rs"]
+mod handover;
 #[path = "cli/tables.rs"]
 mod tables;
+#[path = "cli/units.rs"]
+mod units;
 
 use snapbox::{
     cmd::{Command, OutputAssert, cargo_bin},
@@ -58,9 +64,9 @@ fn without_arguments_three_lines_lead_to_a_result() {
         .assert()
         .code(0)
         .stdout_eq(str![[r"
-ringsum new joint.toml         writes a starter joint to edit
-ringsum estimate joint.toml    tells its thermal resistance: low, nominal, high
-ringsum --help                 lists every command
+ringsum new --from-demo sensor_lid | ringsum estimate -   tells a resistance: low, nominal, high
+ringsum new joint.toml                                    writes a starter joint to edit
+ringsum --help                                            lists every command
 
 "]])
         .stderr_eq("");

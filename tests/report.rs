@@ -922,7 +922,7 @@ fn rings_are_shown_in_millimetres_and_kept_in_metres() {
         share: 0.9,
         cumulative: 0.9,
     };
-    assert!(text::rings(&[vec![ring]]).contains("2.250"));
+    assert!(text::rings(&[vec![ring]], ringsum::units::System::Si).contains("2.250"));
     assert_eq!(
         json::rings(&[vec![ring]])[0][0]["inner_radius"],
         json!(0.00225)

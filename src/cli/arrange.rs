@@ -13,6 +13,7 @@ use crate::{
         drawings,
         input::{self, Source},
         output::{Existing, Target},
+        shown::Shown,
     },
     figures::{ArrangePlot, Drawing, PlanShape},
     joint::{self, Joint},
@@ -20,6 +21,7 @@ use crate::{
         self, Answer, Defaults, Failure, Fasten, Goal, Row, Search, Size, Task, digest, rewritten,
     },
     report::{arrange, csv},
+    units::System,
 };
 use clap::{Args, ValueEnum};
 use keeping::Keeper;
@@ -70,6 +72,8 @@ pub struct Arrange {
     seed: u64,
     #[command(flatten)]
     batch: Batch,
+    #[command(flatten)]
+    shown: Shown,
     /// Print one JSON object per file, in SI
     #[arg(long)]
     json: bool,
@@ -215,6 +219,7 @@ impl Arrange {
             answer,
             defaults,
             failed: false,
+            system: self.shown.system(),
         })
     }
 
@@ -262,6 +267,8 @@ struct Answered {
     heads: Vec<f64>,
     /// Whether a file of it could not be written.
     failed: bool,
+    /// The units of its text.
+    system: System,
 }
 
 impl Answered {
@@ -277,7 +284,7 @@ impl Answered {
 
 impl answers::Answer for Answered {
     fn text(&self) -> String {
-        arrange::answer(&self.answer, &self.defaults)
+        arrange::answer_in(&self.answer, &self.defaults, self.system)
     }
 
     fn object(&self) -> serde_json::Value {

@@ -15,6 +15,7 @@ use crate::{
     figures::{self, Drawing, Format},
     joint::{Joint, Medium},
     pressure::elastic::Failure as Contact,
+    report::csv::{self, Condition},
     uncertainty::{
         self, Comparison, Contender, InMedium, Others, Ranking, RankingOptions, SweepOptions,
         Verification,
@@ -251,6 +252,42 @@ pub fn fields(task: &Task, interface: usize, columns: usize) -> Result<Fields, T
             section: estimate::stack_section(&chain)?,
         })
     })
+}
+
+/// The fields of every interface in every case as tables, maps `columns` points wide, each with what
+/// its file is called.
+pub fn tables(task: &Task, columns: usize) -> Result<Vec<(String, String)>, Trouble> {
+    let mut tables = Vec::new();
+    let cases = &task.joint.service.cases;
+    for (place, case) in cases.iter().enumerate() {
+        // Maps are those of the first case.
+        let mut joint = task.joint.clone();
+        joint.service.cases.rotate_left(place);
+        let of_case = Task {
+            joint: &joint,
+            choice: task.choice,
+            watch: task.watch.clone(),
+        };
+        let chain = of_case.chain()?;
+        let condition = Condition {
+            sink: case.temperature,
+            heat: joint.service.heat,
+        };
+        for interface in 0..joint.interfaces() {
+            let text = task.watched(|| {
+                let field = estimate::field_map(&chain, interface, columns)?;
+                let heat = estimate::heat_map(&chain, interface, columns)?;
+                Ok(csv::map(&field, heat.as_ref(), condition))
+            })?;
+            tables.push((map_name(interface, case.name), text));
+        }
+    }
+    Ok(tables)
+}
+
+/// File of the map of an interface in a case.
+pub fn map_name(interface: usize, case: &str) -> String {
+    format!("map_{}_{case}.csv", interface + 1)
 }
 
 impl From<Failure> for Trouble {

@@ -11,6 +11,7 @@ use crate::{
         input,
         output::{Existing, Target, format},
         results::stem,
+        shown::Shown,
     },
     estimate::FieldMap,
     figures::{ComparisonPlot, ComparisonRow, Drawing},
@@ -54,6 +55,8 @@ pub struct Compare {
     /// Leave out what the loss of a bolt would cost
     #[arg(long)]
     no_loss: bool,
+    #[command(flatten)]
+    shown: Shown,
     /// Print JSON, in SI
     #[arg(long)]
     json: bool,
@@ -99,7 +102,7 @@ impl Compare {
         if self.json {
             console.json(&json::comparison(&found), Layout::Indented)?;
         } else {
-            console.result(&comparison::comparison(&found))?;
+            console.result(&comparison::comparison_in(&found, self.shown.system()))?;
         }
         let cautioned = found
             .joints

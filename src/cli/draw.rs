@@ -48,6 +48,9 @@ pub struct Draw {
     /// Interface that the maps show, counted from 1 at the warm side
     #[arg(long, value_name = "N", default_value_t = 1)]
     interface: usize,
+    /// Write the maps as tables too, SI: one CSV of every interface in every case
+    #[arg(long)]
+    maps: bool,
     #[command(flatten)]
     field: Field,
     #[command(flatten)]
@@ -132,7 +135,16 @@ impl Draw {
                 files.push((path(folder, (name, *format)), bytes));
             }
         }
+        if self.maps {
+            for (name, text) in chain::tables(&task, COLUMNS)? {
+                files.push((folder.join(name), text.into_bytes()));
+            }
+        }
         results::make(folder)?;
+        // A map that exists is found before a figure is written.
+        for (path, _) in &files {
+            Target::new(path, self.existing())?;
+        }
         let mut written = Vec::new();
         for (path, bytes) in files {
             Target::new(&path, self.existing())?.write(&bytes)?;

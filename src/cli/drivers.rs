@@ -10,12 +10,14 @@ use crate::{
         draws,
         field::Field,
         output::Existing,
+        shown::Shown,
     },
     estimate::Options,
     figures::Drawing,
     joint::Joint,
     report::{self, csv},
     uncertainty::{self, FEWEST_BASES, Ranking, RankingOptions},
+    units::System,
 };
 use clap::{Args, ValueEnum};
 use std::path::PathBuf;
@@ -55,6 +57,8 @@ pub struct Drivers {
     /// Override a field: --set 'plate.box.thickness="6 mm"'
     #[arg(long = "set", value_name = "KEY=VALUE")]
     sets: Vec<String>,
+    #[command(flatten)]
+    shown: Shown,
     /// Print one JSON object per file, in SI
     #[arg(long)]
     json: bool,
@@ -132,7 +136,10 @@ impl Drivers {
                     target.write(&chain::render(&drawing, *format)?)?;
                     console.message(&format!("wrote {}\n", target.path.display()));
                 }
-                Ok(Box::new(found))
+                Ok(Box::new(Told {
+                    found,
+                    units: self.shown.system(),
+                }))
             },
         )
     }
@@ -160,16 +167,22 @@ impl Drivers {
     }
 }
 
-impl Answer for Ranking {
+/// What is told of one joint.
+struct Told {
+    found: Ranking,
+    units: System,
+}
+
+impl Answer for Told {
     fn text(&self) -> String {
-        report::drivers::text(self)
+        report::drivers::text_in(&self.found, self.units)
     }
 
     fn object(&self) -> serde_json::Value {
-        report::drivers::json(self)
+        report::drivers::json(&self.found)
     }
 
     fn rows(&self) -> Vec<Vec<String>> {
-        csv::drivers(self)
+        csv::drivers(&self.found)
     }
 }

@@ -9,7 +9,8 @@ use crate::{
         console::{Console, Outcome, Trouble},
         draws::Draws,
         field::Field,
-        output::Existing,
+        output::{Existing, Target},
+        shown::Shown,
     },
     joint::Joint,
     report::{
@@ -65,6 +66,8 @@ pub struct Estimate {
     #[arg(long, value_name = "N", default_value_t = 0, hide_default_value = true,
           value_parser = clap::value_parser!(u32).range(..=1000))]
     verify: u32,
+    #[command(flatten)]
+    shown: Shown,
     /// Print one JSON object per file, in SI
     #[arg(long)]
     json: bool,
@@ -80,10 +83,13 @@ pub struct Estimate {
     #[command(flatten)]
     batch: Batch,
     /// Write one JSON per file and one table, estimates.csv, to a folder instead of printing
-    #[arg(long, value_name = "DIR", conflicts_with_all = ["json", "brief", "full"])]
+    #[arg(long, value_name = "DIR", conflicts_with_all = ["json", "brief", "full"], group = "written")]
     out: Option<PathBuf>,
+    /// Write the joint as nodes and the conductances between them, W/K, to a table
+    #[arg(long, value_name = "FILE.csv", group = "written")]
+    nodes: Option<PathBuf>,
     /// Replace results that exist
-    #[arg(long, requires = "out")]
+    #[arg(long, requires = "written")]
     force: bool,
 }
 
@@ -102,18 +108,42 @@ impl Estimate {
             table: &csv::ESTIMATES,
             out: self.out.as_deref().map(|folder| (folder, existing)),
         };
+        let nodes = self.nodes_target(existing)?;
         let variant = self.variant.as_deref();
         Answers::new(&self.batch, &self.files, &form)?.run(
             console,
             &|path, console| check::read_variant(path, (&self.sets, variant), console),
-            &|(_, joint), _| {
+            &|(_, joint), console| {
+                let found = self.found(joint)?;
+                if let Some(target) = &nodes {
+                    let table = csv::nodes(&found.estimate).map_err(Trouble::Failure)?;
+                    target.write(table.as_bytes())?;
+                    console.message(&format!("wrote {}\n", target.path.display()));
+                }
                 Ok(Box::new(Told {
                     asked: &self,
-                    found: self.found(joint)?,
+                    found,
                     joint: joint.clone(),
                 }))
             },
         )
+    }
+
+    /// The table of nodes, of one joint.
+    fn nodes_target(&self, existing: Existing) -> Result<Option<Target>, Trouble> {
+        let Some(path) = &self.nodes else {
+            return Ok(None);
+        };
+        if self.files.len() > 1 {
+            return Err(Trouble::usage(
+                format!(
+                    "--nodes writes one joint, and {} are named",
+                    self.files.len()
+                ),
+                "write them one by one, or leave --nodes out",
+            ));
+        }
+        Ok(Some(Target::new(path, existing)?))
     }
 
     /// The estimate of a joint and what was asked for beside it.
@@ -157,20 +187,21 @@ impl Estimate {
 
     fn text(&self, found: &Estimated) -> String {
         let (estimate, rings) = (&found.estimate, &found.rings);
+        let units = self.shown.system();
         let detail = match (self.brief, self.full) {
             (true, _) => Detail::Brief,
             (false, true) => Detail::Full,
             (false, false) => Detail::Screen,
         };
-        let mut report = text::painted(&text::estimate_at(estimate, detail));
+        let mut report = text::painted(&text::estimate_in(estimate, detail, units));
         if let Some(case) = estimate.cases.first().filter(|_| !found.media.is_empty()) {
             report.push('\n');
-            report.push_str(&media::table(&found.media, case.name));
+            report.push_str(&media::table(&found.media, case.name, units));
         }
         if self.verify > 0 {
             report.push_str(&text::verification(found.verified.as_ref()));
         }
-        report.push_str(&text::rings(rings));
+        report.push_str(&text::rings(rings, units));
         report.push_str(&text::ring_sum(estimate, rings));
         report
     }

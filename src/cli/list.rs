@@ -38,7 +38,6 @@ impl List {
             }
             return Ok(Outcome::Done);
         };
-        let names: Vec<String> = all.iter().map(|each| each.kind.to_owned()).collect();
         let named = |listing: &Listing| {
             let (kind, word) = (folded(listing.kind), folded(&first));
             kind == word || kind == format!("{word}s") || kind == format!("{word}es")
@@ -56,13 +55,9 @@ impl List {
         }
         chosen.retain(|each| !each.items.is_empty());
         if chosen.is_empty() {
-            let near = chain::nearest(&first, &names);
             return Err(Trouble::usage(
                 format!("nothing in the catalogue answers to `{}`", words.join(" ")),
-                near.map_or_else(
-                    || format!("kinds: {}", names.join(", ")),
-                    |near| format!("did you mean the kind `{near}`?"),
-                ),
+                meant(&first, &words.join(" ")),
             ));
         }
         if self.json {
@@ -78,6 +73,25 @@ impl List {
         }
         Ok(Outcome::Done)
     }
+}
+
+/// What was probably meant where nothing answers: a kind, or a record by its name.
+fn meant(first: &str, words: &str) -> String {
+    let all = catalogue::listings();
+    let kinds: Vec<String> = all.iter().map(|each| each.kind.to_owned()).collect();
+    let leads = first == words || words.starts_with(&format!("{first} "));
+    if let Some(near) = chain::nearest(first, &kinds).filter(|_| leads) {
+        return format!("did you mean the kind `{near}`?");
+    }
+    let items = all.iter().flat_map(|each| &each.items);
+    let mut records: Vec<String> = items
+        .filter_map(|item| item.cells.first().cloned())
+        .collect();
+    records.dedup();
+    chain::nearest(words, &records).map_or_else(
+        || format!("kinds: {}", kinds.join(", ")),
+        |near| format!("did you mean `{near}`?"),
+    )
 }
 
 /// The one record that is left.

@@ -13,6 +13,7 @@ use crate::{
         input::{self, Source},
         output::{Existing, Target},
         results::{self, stem},
+        shown::Shown,
     },
     figures::{Drawing, Format},
     joint::{self, Joint, Version},
@@ -65,6 +66,8 @@ pub struct Report {
     /// Draw also the torque table and the variants, on the field of the results; takes its time
     #[arg(long)]
     thorough: bool,
+    #[command(flatten)]
+    shown: Shown,
     /// Exit with 3 when a caution speaks of a joint
     #[arg(long)]
     strict: bool,
@@ -168,6 +171,7 @@ impl Report {
             media: &found.media,
             ranking: found.ranking.as_ref(),
             comparison: found.comparison.as_ref().map(|(comparison, _)| comparison),
+            units: self.shown.system(),
             left_out: &found.left_out,
         })
         .map_err(|why| Trouble::Failure(format!("{}: the page failed: {why}", source.name)))?;
@@ -241,6 +245,7 @@ impl Report {
         if self.thorough {
             words.push("--thorough".to_owned());
         }
+        words.extend(self.shown.words());
         let words: Vec<String> = words.iter().map(|word| quoted(word)).collect();
         words.join(" ")
     }

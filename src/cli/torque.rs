@@ -11,6 +11,7 @@ use crate::{
         field::Field,
         input::{self, Source},
         output::{self, Existing},
+        shown::Shown,
     },
     estimate::TorqueSweep,
     figures::Drawing,
@@ -18,6 +19,7 @@ use crate::{
     layout,
     report::{csv, json, sweep},
     uncertainty::{CONFIDENCE, SweepOptions},
+    units::System,
 };
 use clap::Args;
 use std::path::PathBuf;
@@ -52,6 +54,8 @@ pub struct Torque {
     /// Override a field: --set 'plate.box.thickness="6 mm"'
     #[arg(long = "set", value_name = "KEY=VALUE")]
     sets: Vec<String>,
+    #[command(flatten)]
+    shown: Shown,
     /// Print one JSON object per file, in SI
     #[arg(long)]
     json: bool,
@@ -109,7 +113,10 @@ impl Torque {
                     target.write(&chain::render(&drawing, *format)?)?;
                     console.message(&format!("wrote {}\n", target.path.display()));
                 }
-                Ok(Box::new(found))
+                Ok(Box::new(Told {
+                    found,
+                    units: self.shown.system(),
+                }))
             },
         )
     }
@@ -156,16 +163,22 @@ impl Torque {
     }
 }
 
-impl Answer for TorqueSweep {
+/// What is told of one joint.
+struct Told {
+    found: TorqueSweep,
+    units: System,
+}
+
+impl Answer for Told {
     fn text(&self) -> String {
-        sweep::torque(self)
+        sweep::torque_in(&self.found, self.units)
     }
 
     fn object(&self) -> serde_json::Value {
-        json::torque(self)
+        json::torque(&self.found)
     }
 
     fn rows(&self) -> Vec<Vec<String>> {
-        csv::torques(self)
+        csv::torques(&self.found)
     }
 }

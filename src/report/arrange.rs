@@ -10,7 +10,9 @@ use crate::{
     report::{
         number::{brief, four, optional, plain, wrapped},
         table::{Side, aligned},
+        text::told_in,
     },
+    units::{Shown, System},
 };
 
 /// Widest line of a list of places.
@@ -39,7 +41,13 @@ pub fn verdict(row: &Row) -> &'static str {
 
 /// The search as a table with the answer under it.
 pub fn answer(answer: &Answer, defaults: &Defaults) -> String {
-    let mut text = format!("{}\n{}\n", plain(&answer.title), question(answer));
+    answer_in(answer, defaults, System::Si)
+}
+
+/// The search in a system of units.
+pub fn answer_in(answer: &Answer, defaults: &Defaults, units: System) -> String {
+    let title = plain(&answer.title);
+    let mut text = format!("{}\n", question(answer));
     let solved = answer.rows.iter().filter(|row| row.solution.is_some());
     let _ = writeln!(
         text,
@@ -51,13 +59,13 @@ pub fn answer(answer: &Answer, defaults: &Defaults) -> String {
         text.push_str("interrupted: this is the best so far\n");
     }
     text.push('\n');
-    text.push_str(&table(answer));
+    text.push_str(&table(answer, units));
     text.push_str(
         "\nK/W: the quantity asked for; least, largest: at those forces of all bolts together\n\
          *: no layout shown costs less and is as good; its low and high are 5 % and 95 % of drawn joints,\n\
          and `meets` is judged at the worse of them; elsewhere at nominal and both forces (by force)\n",
     );
-    text.push_str(&best(answer));
+    text.push_str(&best(answer, units));
     for row in &answer.rows {
         if let Verdict::Failed(failure) = &row.verdict {
             let line = format!("{} {}: {failure}", row.places.len(), row.label);
@@ -98,7 +106,7 @@ pub fn answer(answer: &Answer, defaults: &Defaults) -> String {
             plain(&answer.passed_over.join(", "))
         );
     }
-    text
+    format!("{title}\n{}", told_in(&text, units))
 }
 
 /// What was asked, in a line.
@@ -133,7 +141,10 @@ fn question(answer: &Answer) -> String {
     format!("{wanted}: {required}; {cases}")
 }
 
-fn table(answer: &Answer) -> String {
+fn table(answer: &Answer, units: System) -> String {
+    let [lever, mass] = [Shown::Torque, Shown::SmallMass].map(|shown| units.unit(shown));
+    let torque = format!("torque\n{}", lever.name);
+    let weight = format!("mass\n{}", mass.name);
     let rows: Vec<Vec<String>> = answer
         .rows
         .iter()
@@ -153,9 +164,10 @@ fn table(answer: &Answer) -> String {
                 if row.front { "*" } else { "" }.to_owned(),
                 row.places.len().to_string(),
                 plain(&row.label),
-                row.torque.map_or_else(|| "–".to_owned(), brief),
+                row.torque
+                    .map_or_else(|| "–".to_owned(), |torque| brief(torque / lever.size)),
                 pattern(row),
-                four(1e3 * row.mass),
+                four(row.mass / mass.size),
                 optional(nominal),
                 optional(least),
                 optional(largest),
@@ -171,9 +183,9 @@ fn table(answer: &Answer) -> String {
             ("", left),
             ("bolts", right),
             ("fastener", left),
-            ("torque\nN·m", right),
+            (&torque, right),
             ("pattern", left),
-            ("mass\ng", right),
+            (&weight, right),
             ("K/W\nnominal", right),
             ("K/W\nleast", right),
             ("K/W\nlargest", right),
@@ -193,7 +205,8 @@ fn table(answer: &Answer) -> String {
 }
 
 /// The row that answers, with its places.
-fn best(answer: &Answer) -> String {
+fn best(answer: &Answer, units: System) -> String {
+    let length = units.unit(Shown::Length);
     let Some(row) = answer.best.and_then(|best| answer.rows.get(best)) else {
         return if answer.complete {
             "best     none: no solved layout meets the requirement at the unfavourable end of its band\n"
@@ -205,22 +218,23 @@ fn best(answer: &Answer) -> String {
     let places: Vec<String> = row
         .places
         .iter()
-        .map(|[x, y]| format!("({}, {})", millimetres(*x), millimetres(*y)))
+        .map(|[x, y]| format!("({}, {})", place(*x / length.size), place(*y / length.size)))
         .collect();
     let line = format!(
-        "{} {}, {}: {} K/W; places in mm {}",
+        "{} {}, {}: {} K/W; places in {} {}",
         row.places.len(),
         plain(&row.label),
         pattern(row),
         four(row.value()),
+        length.name,
         places.join(" ")
     );
     format!("best     {}\n", wrapped(&line, WIDTH - 9, 9))
 }
 
-/// A length of a layout in mm, whole micrometres.
-fn millimetres(metres: f64) -> String {
-    let text = format!("{:.3}", 1e3 * metres);
+/// A length of a layout, to a thousandth of its unit.
+fn place(length: f64) -> String {
+    let text = format!("{length:.3}");
     text.trim_end_matches('0').trim_end_matches('.').to_owned()
 }
 
@@ -230,6 +244,7 @@ pub fn json(answer: &Answer, defaults: &Defaults) -> Value {
     let assumed = defaults.taken.iter();
     json!({
         "ringsum": env!("CARGO_PKG_VERSION"),
+        "units": "SI",
         "title": answer.title,
         "cases": answer.cases,
         "screened_case": answer.screened_case,

@@ -6,9 +6,10 @@ use crate::{
     report::{
         number::{band, brief, cut, four, optional, percent, plain, wrapped},
         table::{Side, aligned},
-        text::WIDTH,
+        text::{WIDTH, told_in},
     },
     uncertainty::{Compared, Comparison, Sense, Verdict},
+    units::{Shown, System},
 };
 use std::fmt::Write;
 
@@ -17,14 +18,19 @@ const NAME: usize = 26;
 
 /// The comparison on a screen.
 pub fn comparison(found: &Comparison) -> String {
+    comparison_in(found, System::Si)
+}
+
+/// The comparison in a system of units.
+pub fn comparison_in(found: &Comparison, units: System) -> String {
     let parts = [
         heading(found),
         results(found),
-        extras(found),
+        extras(found, units),
         verdicts(found),
         notes(found),
     ];
-    parts.join("\n")
+    told_in(&parts.join("\n"), units)
 }
 
 impl Compared {
@@ -111,7 +117,10 @@ fn results(found: &Comparison) -> String {
 type Column<'a> = (&'a str, Box<dyn Fn(&Compared) -> Option<String>>);
 
 /// Rise, requirement, strength, mass, bolts, cost and the worst loss.
-fn extras(found: &Comparison) -> String {
+fn extras(found: &Comparison, units: System) -> String {
+    let [small, large] = [Shown::SmallMass, Shown::Mass].map(|shown| units.unit(shown));
+    let fasteners = format!("fasteners\n{}", small.name);
+    let all = format!("all\n{}", large.name);
     let columns: [Column; 11] = [
         (
             "rise K\nnominal",
@@ -128,10 +137,13 @@ fn extras(found: &Comparison) -> String {
         ),
         ("bolts", Box::new(|joint| Some(joint.bolts.to_string()))),
         (
-            "fasteners\ng",
-            Box::new(|joint| Some(four(1e3 * joint.mass.fasteners))),
+            &fasteners,
+            Box::new(move |joint| Some(four(joint.mass.fasteners / small.size))),
         ),
-        ("all\nkg", Box::new(|joint| Some(four(joint.mass.total())))),
+        (
+            &all,
+            Box::new(move |joint| Some(four(joint.mass.total() / large.size))),
+        ),
         ("cost", Box::new(|joint| joint.cost.map(brief))),
         (
             "lost\nbolt",

@@ -2,10 +2,12 @@
 
 mod drivers;
 mod layouts;
+mod maps;
 mod torques;
 
 pub use drivers::{DRIVERS, drivers};
 pub use layouts::{LAYOUTS, layouts};
+pub use maps::{Condition, map, nodes};
 pub use torques::{TORQUES, torques};
 
 use crate::{

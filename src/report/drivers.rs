@@ -8,9 +8,10 @@ use crate::{
     report::{
         number::{cut, four, optional, percent, plain, wrapped},
         table::{Side, aligned},
-        text::{WIDTH, wrapped_after},
+        text::{WIDTH, told_in, wrapped_after},
     },
     uncertainty::{Index, Ranking, Scale, Share},
+    units::System,
 };
 
 /// Widest name in the table, characters.
@@ -22,6 +23,11 @@ const WORTH_A_LINE: f64 = 0.01;
 
 /// The ranking as a table, with what to do about the inputs that matter.
 pub fn text(ranking: &Ranking) -> String {
+    text_in(ranking, System::Si)
+}
+
+/// The ranking in a system of units.
+pub fn text_in(ranking: &Ranking, units: System) -> String {
     let (target, unit) = (ranking.target.name(), ranking.target.unit());
     let rows: Vec<Vec<String>> = ranking
         .inputs
@@ -93,7 +99,7 @@ pub fn text(ranking: &Ranking) -> String {
         }
         let _ = writeln!(text, "{}", wrapped(&line, WIDTH, 2));
     }
-    text.push_str(&remedies(ranking));
+    text.push_str(&told_in(&remedies(ranking), units));
     text
 }
 
@@ -174,6 +180,7 @@ pub fn json(ranking: &Ranking) -> Value {
     let index = |index: &Index| (share(&index.first), share(&index.total));
     json!({
         "version": env!("CARGO_PKG_VERSION"),
+        "units": "SI",
         "title": ranking.title,
         "case": ranking.case,
         "field": ranking.field,

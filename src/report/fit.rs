@@ -316,6 +316,7 @@ pub fn series_json(series: &Series, (name, block): (&str, &str)) -> Value {
     let branches: Vec<Value> = series.branches.iter().map(branch_json).collect();
     json!({
         "ringsum": env!("CARGO_PKG_VERSION"),
+        "units": "SI",
         "format": 1,
         "file": name,
         "fit": "law",
@@ -385,6 +386,7 @@ pub fn answer_json(asked: &Question, answer: &Answer, name: &str) -> Value {
         .collect();
     json!({
         "ringsum": env!("CARGO_PKG_VERSION"),
+        "units": "SI",
         "format": 1,
         "file": name,
         "fit": "unknown",

@@ -38,6 +38,7 @@ pub fn estimate(estimate: &Estimate) -> Value {
     };
     for (key, value) in [
         ("ringsum", json!(env!("CARGO_PKG_VERSION"))),
+        ("units", json!("SI")),
         ("format", json!(FORMAT)),
         ("title", json!(estimate.title)),
         ("seed", json!(estimate.seed)),
@@ -354,6 +355,7 @@ pub fn torque(sweep: &TorqueSweep) -> Value {
         .collect();
     json!({
         "ringsum": env!("CARGO_PKG_VERSION"),
+        "units": "SI",
         "format": FORMAT,
         "title": sweep.title,
         "group": sweep.group,

@@ -83,7 +83,8 @@ pub fn json(listings: &[Listing]) -> Value {
         let records: Vec<&Value> = listing.items.iter().map(|item| &item.record).collect();
         kinds.insert(listing.kind.to_owned(), json!(records));
     }
-    json!({ "ringsum": env!("CARGO_PKG_VERSION"), "format": FORMAT, "kinds": kinds })
+    json!({ "ringsum": env!("CARGO_PKG_VERSION"),
+        "units": "SI", "format": FORMAT, "kinds": kinds })
 }
 
 /// A file without faults.

@@ -8,6 +8,7 @@ use crate::{
         text::WIDTH,
     },
     uncertainty::InMedium,
+    units::{Shown, System},
 };
 use std::fmt::Write;
 
@@ -22,7 +23,9 @@ pub(super) fn vacuum_over(media: &[InMedium], of: &InMedium) -> Option<f64> {
 }
 
 /// One row for every medium, and a sentence for every gas beside vacuum; empty without media.
-pub fn table(media: &[InMedium], case: &str) -> String {
+pub fn table(media: &[InMedium], case: &str, units: System) -> String {
+    let gas = units.unit(Shown::GasPressure);
+    let at = format!("at\n{}", gas.name);
     if media.is_empty() {
         return String::new();
     }
@@ -30,7 +33,9 @@ pub fn table(media: &[InMedium], case: &str) -> String {
         .iter()
         .map(|each| {
             let mut row = vec![each.medium.word()];
-            row.push(optional(each.medium.pressure().map(|pascal| pascal / 1e3)));
+            row.push(optional(
+                each.medium.pressure().map(|pascal| pascal / gas.size),
+            ));
             row.extend(band(&each.source_to_sink, 1.0));
             row.extend(band(&each.added_by_joint, 1.0));
             row.push(optional(each.rise.map(|rise| rise.nominal)));
@@ -41,7 +46,7 @@ pub fn table(media: &[InMedium], case: &str) -> String {
     let mut text = aligned(
         &[
             ("medium", Side::Left),
-            ("at\nkPa", right),
+            (&at, right),
             ("sink K/W\nlow", right),
             ("sink K/W\nnominal", right),
             ("sink K/W\nhigh", right),

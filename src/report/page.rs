@@ -5,6 +5,7 @@
 
 mod answers;
 mod inputs;
+mod restated;
 mod results;
 mod steps;
 mod table;
@@ -17,6 +18,7 @@ use crate::{
     joint::{Joint, Stated},
     report::number::{brief, percent},
     uncertainty::{Comparison, InMedium, Ranking},
+    units::{Shown, System},
 };
 
 use answers::{Told, Torque};
@@ -97,6 +99,8 @@ pub struct Contents<'a> {
     pub ranking: Option<&'a Ranking>,
     /// The variants of the file; none where it has none.
     pub comparison: Option<&'a Comparison>,
+    /// Units of tables and sentences; drawings, and values under the pointer, are in SI.
+    pub units: System,
     /// What could not be computed, and why, a sentence each.
     pub left_out: &'a [String],
 }
@@ -127,6 +131,8 @@ struct Page<'a> {
     medium: String,
     values: Option<String>,
     torque: Option<Torque>,
+    lever: &'static str,
+    drawn_in_si: bool,
     drivers: Option<Table>,
     comparison: Option<Table>,
     cautions: Vec<Told>,
@@ -144,7 +150,7 @@ pub fn page(contents: &Contents) -> Result<String, String> {
     let case = estimate.cases.first();
     let drivers = answers::drivers(contents.ranking, case.map_or(&[], |case| &case.drivers));
     let name = case.map_or("", |case| case.name);
-    Page {
+    let mut page = Page {
         title: &estimate.title,
         style: include_str!("page/style.css"),
         script: include_str!("page/script.js"),
@@ -159,6 +165,8 @@ pub fn page(contents: &Contents) -> Result<String, String> {
         medium: contents.joint.service.medium.word(),
         values: contents.fields.as_ref().map(values::script),
         torque: contents.torque.map(answers::torque),
+        lever: contents.units.unit(Shown::Torque).name,
+        drawn_in_si: contents.units != System::Si,
         drivers: (!drivers.rows.is_empty()).then_some(drivers),
         comparison: contents.comparison.map(answers::comparison),
         cautions: answers::cautions(&estimate.cautions),
@@ -166,9 +174,9 @@ pub fn page(contents: &Contents) -> Result<String, String> {
         source: contents.source,
         text: Some(contents.source.text).filter(|text| text.len() <= LONGEST_SHOWN),
         version: env!("CARGO_PKG_VERSION"),
-    }
-    .render()
-    .map_err(|found| found.to_string())
+    };
+    page.restate(contents.units);
+    page.render().map_err(|found| found.to_string())
 }
 
 /// The title block, as drawings have one.

@@ -6,9 +6,10 @@ use crate::{
     report::{
         number::{band, four, percent, plain},
         table::{Side, aligned},
-        text::{Detail, cautions},
+        text::{Detail, cautions, told_in},
         window,
     },
+    units::{Shown, System},
 };
 use std::fmt::Write;
 
@@ -59,6 +60,12 @@ pub fn worse(sweep: &TorqueSweep) -> Option<Worse> {
 
 /// The sweep as a table with the stated, the best and the largest torque marked.
 pub fn torque(sweep: &TorqueSweep) -> String {
+    torque_in(sweep, System::Si)
+}
+
+/// The sweep in a system of units.
+pub fn torque_in(sweep: &TorqueSweep, units: System) -> String {
+    let [lever, force] = [Shown::Torque, Shown::Force].map(|shown| units.unit(shown));
     let stated = nearest(sweep, sweep.stated);
     let best = best_row(sweep);
     let rows: Vec<Vec<String>> = sweep
@@ -80,14 +87,16 @@ pub fn torque(sweep: &TorqueSweep) -> String {
             if !point.passes {
                 marks.push("over");
             }
-            row(point, &marks.join(" "))
+            row(point, &marks.join(" "), [lever.size, force.size])
         })
         .collect();
     let right = Side::Right;
+    let torque = format!("torque\n{}", lever.name);
+    let forces = format!("force {}\nnominal", force.name);
     let table = aligned(
         &[
-            ("torque\nN·m", right),
-            ("force kN\nnominal", right),
+            (&torque, right),
+            (&forces, right),
             ("sink K/W\nlow", right),
             ("sink K/W\nnominal", right),
             ("sink K/W\nhigh", right),
@@ -98,9 +107,18 @@ pub fn torque(sweep: &TorqueSweep) -> String {
         ],
         &rows,
     );
-    let torques: Vec<f64> = sweep.points.iter().map(|point| point.torque).collect();
-    let table = window::interleaved(&table, &torques, &window::marks(sweep));
-    let mut text = format!("{}\n", plain(&sweep.title));
+    let torques: Vec<f64> = sweep
+        .points
+        .iter()
+        .map(|point| point.torque / lever.size)
+        .collect();
+    let mut marks = window::marks(sweep);
+    for mark in &mut marks {
+        mark.torque /= lever.size;
+    }
+    let table = window::interleaved(&table, &torques, &marks);
+    let title = plain(&sweep.title);
+    let mut text = String::new();
     let _ = writeln!(
         text,
         "torque of {}; the other fasteners as stated; {} case\n\
@@ -151,7 +169,7 @@ pub fn torque(sweep: &TorqueSweep) -> String {
         text.push('\n');
         text.push_str(&told);
     }
-    text
+    format!("{title}\n{}", told_in(&text, units))
 }
 
 /// The best torque where it is no row: the minimum between two, or the limit of strength.
@@ -252,8 +270,11 @@ fn remarks(sweep: &TorqueSweep, index: usize) -> Vec<&'static str> {
     lines
 }
 
-fn row(point: &TorquePoint, marks: &str) -> Vec<String> {
-    let mut row = vec![four(point.torque), four(point.force.nominal / 1e3)];
+fn row(point: &TorquePoint, marks: &str, [lever, force]: [f64; 2]) -> Vec<String> {
+    let mut row = vec![
+        four(point.torque / lever),
+        four(point.force.nominal / force),
+    ];
     row.extend(band(&point.source_to_sink, 1.0));
     row.push(four(point.added_by_joint.nominal));
     row.push(four(point.contact.nominal));

@@ -11,6 +11,7 @@ use crate::{
         table::{Side, aligned},
     },
     uncertainty::Verification,
+    units::{Shown, System},
 };
 use anstyle::{AnsiColor, Style};
 use std::fmt::Write;
@@ -44,20 +45,47 @@ pub fn estimate(estimate: &Estimate) -> String {
 
 /// The report, as long as asked for.
 pub fn estimate_at(estimate: &Estimate, detail: Detail) -> String {
-    let mut parts = vec![heading(estimate)];
+    estimate_in(estimate, detail, System::Si)
+}
+
+/// The report in a system of units.
+pub fn estimate_in(estimate: &Estimate, detail: Detail, units: System) -> String {
+    let heading = heading(estimate);
+    let mut parts = Vec::new();
     if let Some(case) = estimate.cases.first() {
-        parts.push(bolts(case, detail));
-        parts.push(thermal::results(estimate, case) + &thermal::worst(estimate, case));
+        parts.push(bolts(case, detail, units));
+        parts.push(thermal::results(estimate, case, units) + &thermal::worst(estimate, case));
         parts.push(thermal::verdict(estimate, case) + &temperatures::told(estimate, case));
         if estimate.cases.len() > 1 {
-            parts.push(thermal::cases(estimate));
+            parts.push(thermal::cases(estimate, units));
         }
         parts.push(thermal::drivers(&case.drivers));
     }
     parts.push(cautions(&estimate.cautions, detail));
     parts.push(assumptions(&estimate.assumptions, detail));
     parts.retain(|part| !part.is_empty());
-    parts.join("\n")
+    // Title and planes stand as the file has them.
+    format!("{heading}\n{}", told_in(&parts.join("\n"), units))
+}
+
+/// A finished text in a system of units, its lines no longer than a screen is wide.
+pub(super) fn told_in(text: &str, units: System) -> String {
+    if units == System::Si {
+        return text.to_owned();
+    }
+    let mut told = String::new();
+    for line in units.restated(text).lines() {
+        if line.chars().count() > WIDTH {
+            let indent = line.len() - line.trim_start().len();
+            let body = wrapped(line.trim_start(), WIDTH - indent, 2);
+            let margin = " ".repeat(indent);
+            let body = body.replace('\n', &format!("\n{margin}"));
+            let _ = writeln!(told, "{margin}{body}");
+        } else {
+            let _ = writeln!(told, "{line}");
+        }
+    }
+    told
 }
 
 fn heading(estimate: &Estimate) -> String {
@@ -130,7 +158,8 @@ pub(super) fn wrapped_after(line: &str, label: usize) -> String {
 }
 
 /// Clamp force, one row for all bolts that share it, and the pressure that comes of it.
-fn bolts(case: &CaseResult, detail: Detail) -> String {
+fn bolts(case: &CaseResult, detail: Detail, units: System) -> String {
+    let [force, torque] = [Shown::Force, Shown::Torque].map(|shown| units.unit(shown));
     let mut rows = Vec::new();
     for (name, group) in groups(&case.bolts) {
         let bolt = group[0];
@@ -141,8 +170,8 @@ fn bolts(case: &CaseResult, detail: Detail) -> String {
             continue;
         }
         let mut row = vec![name];
-        row.extend(band(&bolt.force, 1e3));
-        row.extend(band(&bolt.force_in_service, 1e3));
+        row.extend(band(&bolt.force, force.size));
+        row.extend(band(&bolt.force_in_service, force.size));
         row.push(
             bolt.strength_use
                 .map_or_else(|| "–".to_owned(), |each| percent(each[0])),
@@ -151,26 +180,29 @@ fn bolts(case: &CaseResult, detail: Detail) -> String {
             bolt.strength_use
                 .map_or_else(|| "–".to_owned(), |each| percent(each[1])),
         );
-        row.push(optional(bolt.largest_torque));
+        row.push(optional(bolt.largest_torque.map(|most| most / torque.size)));
         rows.push(row);
     }
     let right = Side::Right;
+    let [assembly, service] =
+        ["assembly", "service"].map(|when| format!("{when} {}\nnominal", force.name));
+    let most = format!("torque {}\nat most", torque.name);
     let mut text = aligned(
         &[
             ("clamp force\nper bolt", Side::Left),
             ("\nleast", right),
-            ("assembly kN\nnominal", right),
+            (&assembly, right),
             ("\nmost", right),
             ("\nleast", right),
-            ("service kN\nnominal", right),
+            (&service, right),
             ("\nmost", right),
             ("of yield\nnominal", right),
             ("\nhighest", right),
-            ("torque N·m\nat most", right),
+            (&most, right),
         ],
         &rows,
     );
-    text.push_str(&axial::loads(case));
+    text.push_str(&axial::loads(case, units));
     text.push_str(&pressure::field(case, detail));
     text
 }

@@ -10,23 +10,31 @@ pub(super) type Unit = (f64, Dimension);
 /// Standard acceleration of free fall, m/s²; exact by definition (CGPM 1901).
 const FREE_FALL: f64 = 9.80665;
 /// International inch, m; exact by definition (1959).
-const INCH: f64 = 0.0254;
+pub(super) const INCH: f64 = 0.0254;
 /// International pound, kg; exact by definition (1959).
-const POUND: f64 = 0.453_592_37;
+pub(super) const POUND: f64 = 0.453_592_37;
 /// Pound-force, N; exact, from the two above.
-const POUND_FORCE: f64 = POUND * FREE_FALL;
+pub(super) const POUND_FORCE: f64 = POUND * FREE_FALL;
 /// Standard atmosphere, Pa; exact by definition (CGPM 1954).
 const ATMOSPHERE: f64 = 101_325.0;
 /// Pound-force per square inch, Pa; exact, from the definitions above.
-const PSI: f64 = POUND_FORCE / (INCH * INCH);
+pub(super) const PSI: f64 = POUND_FORCE / (INCH * INCH);
+/// Millionth of an inch, m; exact.
+pub(super) const MICROINCH: f64 = 1e-6 * INCH;
+/// Inch times pound-force, N m; exact.
+pub(super) const INCH_POUND: f64 = INCH * POUND_FORCE;
+/// Foot times pound-force, N m; exact.
+pub(super) const FOOT_POUND: f64 = 12.0 * INCH_POUND;
 /// International table British thermal unit, J; exact, from 4.1868 J/(g K) by definition.
 const BTU: f64 = 4186.8 * POUND * 5.0 / 9.0;
+/// Btu per hour, square foot and degree Fahrenheit, W/(m² K); exact.
+pub(super) const BTU_PER_FOOT: f64 = BTU / 3600.0 / (144.0 * INCH * INCH) * 1.8;
 /// International table calorie, J; exact by definition (1956).
 const CALORIE: f64 = 4.1868;
 /// Celsius zero, K; exact by definition of the scale.
-const CELSIUS_ZERO: f64 = 273.15;
+pub(super) const CELSIUS_ZERO: f64 = 273.15;
 /// Fahrenheit zero above absolute zero, in Fahrenheit degrees; exact by definition of the scale.
-const FAHRENHEIT_ZERO: f64 = 459.67;
+pub(super) const FAHRENHEIT_ZERO: f64 = 459.67;
 /// One degree of arc, rad.
 const DEGREE: f64 = std::f64::consts::PI / 180.0;
 

@@ -1,5 +1,6 @@
 //! What a solved heat, other media and a minimum of the torque add to the report.
 
+use ringsum::units::System;
 use ringsum::{
     estimate::{Band, Minimum, RingRow, Temperatures},
     joint::{Limit, Medium},
@@ -154,7 +155,7 @@ fn media_stand_in_one_table_with_what_a_test_in_gas_says() {
         rise: Some(Band::nominal(22.0 * (added + 0.04))),
     };
     let rows = [row("vacuum", 0.3), row("air", 0.1), row("helium", 0.29)];
-    let table = media::table(&rows, "service");
+    let table = media::table(&rows, "service", System::Si);
     for part in [
         "vacuum",
         "101.3",
@@ -184,12 +185,12 @@ fn media_stand_in_one_table_with_what_a_test_in_gas_says() {
     assert_eq!(object[1]["pressure"], json!(101_325.0));
     assert!((object[1]["vacuum_over_medium"].as_f64().expect("a ratio") - 3.0).abs() < 1e-12);
     // Without vacuum there is nothing to hold a gas against.
-    assert!(!media::table(&rows[1..], "service").contains("a test in"));
+    assert!(!media::table(&rows[1..], "service", System::Si).contains("a test in"));
     assert_eq!(
         json::media(&rows[1..])[0]["vacuum_over_medium"],
         Value::Null
     );
-    assert_eq!(media::table(&[], "service"), "");
+    assert_eq!(media::table(&[], "service", System::Si), "");
 }
 
 #[test]

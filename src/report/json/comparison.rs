@@ -14,6 +14,7 @@ use crate::{
 pub fn comparison(found: &Comparison) -> Value {
     json!({
         "ringsum": env!("CARGO_PKG_VERSION"),
+        "units": "SI",
         "format": FORMAT,
         "best": found.joints.get(found.best).map(|joint| &joint.name),
         "sense": match found.sense {

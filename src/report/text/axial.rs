@@ -7,25 +7,33 @@ use crate::{
         table::{Side, aligned},
         text::groups,
     },
+    units::{Shown, System},
 };
 
 /// The table of the loads; empty where none is stated.
-pub(super) fn loads(case: &CaseResult) -> String {
+pub(super) fn loads(case: &CaseResult, units: System) -> String {
+    let force = units.unit(Shown::Force);
     let rows: Vec<Vec<String>> = groups(&case.bolts)
         .into_iter()
-        .filter_map(|(name, group)| row(name, group[0]))
+        .filter_map(|(name, group)| row(name, group[0], force.size))
         .collect();
     if rows.is_empty() {
         return String::new();
     }
     let right = Side::Right;
+    let [load, bolt, left] = [("load", "most"), ("bolt", "most"), ("clamp left", "least")].map(
+        |(what, end)| match what {
+            "clamp left" => format!("{what}\n{} {end}", force.name),
+            _ => format!("{what} {}\n{end}", force.name),
+        },
+    );
     aligned(
         &[
             ("load along\neach bolt", Side::Left),
-            ("load kN\nmost", right),
+            (&load, right),
             ("share in\nthe bolt", right),
-            ("bolt kN\nmost", right),
-            ("clamp left\nkN least", right),
+            (&bolt, right),
+            (&left, right),
             ("\nnominal", right),
             ("faces part at\ntimes the load", right),
             ("of yield\nin service", right),
@@ -34,7 +42,7 @@ pub(super) fn loads(case: &CaseResult) -> String {
     )
 }
 
-fn row(name: String, bolt: &BoltResult) -> Option<Vec<String>> {
+fn row(name: String, bolt: &BoltResult, unit: f64) -> Option<Vec<String>> {
     let shared = bolt.axial.as_ref()?;
     let separation = if shared.separation.is_finite() {
         four(shared.separation)
@@ -43,11 +51,11 @@ fn row(name: String, bolt: &BoltResult) -> Option<Vec<String>> {
     };
     Some(vec![
         name,
-        four(shared.load.high / 1e3),
+        four(shared.load.high / unit),
         percent(shared.load_factor.nominal),
-        four(shared.bolt_force / 1e3),
-        four(shared.residual.low / 1e3),
-        four(shared.residual.nominal / 1e3),
+        four(shared.bolt_force / unit),
+        four(shared.residual.low / unit),
+        four(shared.residual.nominal / unit),
         separation,
         bolt.use_in_service.map_or_else(|| "–".to_owned(), percent),
     ])

@@ -7,11 +7,27 @@ use crate::{
         table::{Side, aligned},
         text::WIDTH,
     },
+    units::{Shown, System},
 };
 use std::fmt::Write;
 
 /// The rings of every bolt.
-pub fn rings(tables: &[Vec<RingRow>]) -> String {
+pub fn rings(tables: &[Vec<RingRow>], units: System) -> String {
+    let kinds = [
+        Shown::Length,
+        Shown::Area,
+        Shown::Pressure,
+        Shown::Conductance,
+    ];
+    let [length, area, pressure, local] = kinds.map(|shown| units.unit(shown));
+    let names = [
+        ("from", length),
+        ("to", length),
+        ("area", area),
+        ("pressure", pressure),
+        ("local", local),
+    ]
+    .map(|(what, unit)| format!("{what}\n{}", unit.name));
     let right = Side::Right;
     let mut text = String::new();
     for (index, rings) in tables.iter().enumerate() {
@@ -19,11 +35,11 @@ pub fn rings(tables: &[Vec<RingRow>]) -> String {
             .iter()
             .map(|ring| {
                 vec![
-                    four(ring.radius[0] * 1e3),
-                    four(ring.radius[1] * 1e3),
-                    four(ring.area * 1e6),
-                    four(ring.pressure / 1e6),
-                    four(ring.conductance),
+                    four(ring.radius[0] / length.size),
+                    four(ring.radius[1] / length.size),
+                    four(ring.area / area.size),
+                    four(ring.pressure / pressure.size),
+                    four(ring.conductance / local.size),
                     four(ring.share),
                     four(ring.cumulative),
                 ]
@@ -32,11 +48,11 @@ pub fn rings(tables: &[Vec<RingRow>]) -> String {
         let _ = writeln!(text, "\nrings around bolt {}", index + 1);
         text.push_str(&aligned(
             &[
-                ("from\nmm", right),
-                ("to\nmm", right),
-                ("area\nmm²", right),
-                ("pressure\nMPa", right),
-                ("local\nW/(m²·K)", right),
+                (&names[0], right),
+                (&names[1], right),
+                (&names[2], right),
+                (&names[3], right),
+                (&names[4], right),
                 ("ring\nW/K", right),
                 ("sum\nW/K", right),
             ],

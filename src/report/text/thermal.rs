@@ -10,16 +10,19 @@ use crate::{
         table::{Side, aligned},
         text::{WIDTH, wrapped_after},
     },
+    units::{Shown, System},
 };
 use std::fmt::Write;
 
 /// 0 °C, K.
 pub(in crate::report) const ICE_POINT: f64 = 273.15;
+/// International inch, m.
+const INCH: f64 = 0.0254;
 
 /// The results with their planes: contact only and with spreading, never one for the other.
-pub fn results(estimate: &Estimate, case: &CaseResult) -> String {
+pub fn results(estimate: &Estimate, case: &CaseResult, units: System) -> String {
     let results = &case.results;
-    let rows: Vec<Vec<String>> = [
+    let named = [
         (
             "contact only",
             &results.contact,
@@ -37,16 +40,17 @@ pub fn results(estimate: &Estimate, case: &CaseResult) -> String {
             &results.perfect_contact,
             "the floor: no interface",
         ),
-    ]
-    .into_iter()
-    .map(|(name, result, purpose)| {
-        let mut row = vec![name.to_owned()];
-        row.extend(band(&result.resistance, 1.0));
-        row.extend(inverse(&result.resistance).map(optional));
-        row.push(purpose.to_owned());
-        row
-    })
-    .collect();
+    ];
+    let rows: Vec<Vec<String>> = named
+        .iter()
+        .map(|(name, result, purpose)| {
+            let mut row = vec![(*name).to_owned()];
+            row.extend(band(&result.resistance, 1.0));
+            row.extend(inverse(&result.resistance).map(optional));
+            row.push((*purpose).to_owned());
+            row
+        })
+        .collect();
     let right = Side::Right;
     let heading = if estimate.cases.len() > 1 {
         format!("thermal result\n{} case", case.name)
@@ -66,6 +70,11 @@ pub fn results(estimate: &Estimate, case: &CaseResult) -> String {
         ],
         &rows,
     );
+    if units == System::Inch {
+        text.push_str(&customary(
+            &named.map(|(name, result, _)| (name, &result.resistance)),
+        ));
+    }
     text.push_str(
         "Contact only leaves out how heat spreads to the bolts; all other rows hold that spreading.\n",
     );
@@ -100,6 +109,35 @@ pub(in crate::report) fn bent(case: &CaseResult) -> Option<String> {
         "flatness leaves open which way faces are bent, low and high hold for each: source to sink {} K/W",
         ways.collect::<Vec<String>>().join(", ")
     ))
+}
+
+/// The results once more as a network in Btu, hours and degrees Fahrenheit takes them.
+fn customary(named: &[(&str, &Band)]) -> String {
+    // The heat of 1 Btu/(h·°F) in W/K; exact.
+    let unit = System::Inch.unit(Shown::Conductance).size * 144.0 * INCH * INCH;
+    let rows: Vec<Vec<String>> = named
+        .iter()
+        .map(|(name, resistance)| {
+            let mut row = vec![(*name).to_owned()];
+            row.extend(band(resistance, unit.recip()));
+            row.extend(inverse(resistance).map(|value| optional(value.map(|each| each / unit))));
+            row
+        })
+        .collect();
+    let right = Side::Right;
+    let table = aligned(
+        &[
+            ("the same", Side::Left),
+            ("\nlow", right),
+            ("°F·h/Btu\nnominal", right),
+            ("\nhigh", right),
+            ("\nlow", right),
+            ("Btu/(h·°F)\nnominal", right),
+            ("\nhigh", right),
+        ],
+        &rows,
+    );
+    format!("K/W is °C/W, W/K is W/°C; a rise of 1 K is one of 1.8 °F\n\n{table}")
 }
 
 /// How the ends of source to sink settle with the draws, with one standard error.
@@ -291,7 +329,9 @@ fn plane_name(plane: Plane) -> &'static str {
 }
 
 /// Hot and cold side by side.
-pub fn cases(estimate: &Estimate) -> String {
+pub fn cases(estimate: &Estimate, units: System) -> String {
+    let force = units.unit(Shown::Force);
+    let (_, degree) = units.temperature(0.0);
     let columns = &estimate.cases;
     let row = |name: &str, cell: &dyn Fn(&CaseResult) -> String| {
         let mut row = vec![name.to_owned()];
@@ -299,15 +339,20 @@ pub fn cases(estimate: &Estimate) -> String {
         row
     };
     let mut rows = vec![
-        row("sink surface, °C", &|case| {
-            format!("{:.1}", case.sink_temperature - ICE_POINT)
+        row(&format!("sink surface, {degree}"), &|case| {
+            format!("{:.1}", units.temperature(case.sink_temperature).0)
         }),
-        row("clamp force in service, kN", &|case| {
-            case.bolts
-                .iter()
-                .find(|bolt| !bolt.missing)
-                .map_or_else(String::new, |bolt| spread(&bolt.force_in_service, 1e3))
-        }),
+        row(
+            &format!("clamp force in service, {}", force.name),
+            &|case| {
+                case.bolts
+                    .iter()
+                    .find(|bolt| !bolt.missing)
+                    .map_or_else(String::new, |bolt| {
+                        spread(&bolt.force_in_service, force.size)
+                    })
+            },
+        ),
         row("contact only, K/W", &|case| {
             spread(&case.results.contact.resistance, 1.0)
         }),
