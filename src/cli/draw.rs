@@ -102,14 +102,9 @@ impl Draw {
 
     /// Refuses a folder that is none or holds figures that are to be kept.
     fn check(&self, folder: &Path) -> Result<(), Trouble> {
+        results::folder(folder)?;
         if !folder.exists() {
             return Ok(());
-        }
-        if !folder.is_dir() {
-            return Err(Trouble::usage(
-                format!("`{}` is a file", folder.display()),
-                "--out names a folder",
-            ));
         }
         for name in drawings::NAMES {
             for format in self.format.each() {

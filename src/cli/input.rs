@@ -15,6 +15,9 @@ use std::{
 /// Largest joint file, bytes: no more is read than the reader takes.
 const LARGEST: u64 = LONGEST_FILE as u64;
 
+/// Largest checkpoint of a search, bytes; one of six bolts has some hundred kilobytes.
+const LONGEST_CHECKPOINT: u64 = 100_000_000;
+
 /// A joint file as read.
 #[derive(Debug)]
 pub struct Source {
@@ -66,7 +69,7 @@ pub fn read(path: &Path) -> Result<Source, Fault> {
                     .map(|name| format!("name a file in it: {}", path.join(name).display())),
             ));
         }
-        fs::File::open(path).and_then(limited)
+        opened(path).and_then(limited)
     }
     .map_err(|found| unreadable(path, &found))?;
     if bytes.len() as u64 > LARGEST {
@@ -111,13 +114,44 @@ pub fn table(folder: &Path, name: &str) -> Result<String, String> {
     if path.is_dir() {
         return Err("it is a folder".to_owned());
     }
-    let file = fs::File::open(&path).map_err(|found| match found.kind() {
+    let file = opened(&path).map_err(|found| match found.kind() {
         io::ErrorKind::NotFound => {
             format!("there is no file `{}`", plain(&path.display().to_string()))
         }
         _ => found.to_string(),
     })?;
     text_of_table(file)
+}
+
+/// A file to read. A pipe with a name is refused, because opening it waits until somebody writes, which
+/// may be never; a pipe of the shell, `<(…)`, has no name.
+fn opened(path: &Path) -> io::Result<fs::File> {
+    #[cfg(unix)]
+    {
+        use std::os::unix::fs::FileTypeExt;
+        let pipe = fs::metadata(path)?.file_type().is_fifo();
+        if pipe && fs::canonicalize(path).is_ok() {
+            return Err(io::Error::other(
+                "it is a named pipe, which may never be written to; give its text on standard input",
+            ));
+        }
+    }
+    fs::File::open(path)
+}
+
+/// The text of a checkpoint, no longer than any search writes it.
+pub fn checkpoint(path: &Path) -> io::Result<String> {
+    let mut bytes = Vec::new();
+    opened(path)?
+        .take(LONGEST_CHECKPOINT + 1)
+        .read_to_end(&mut bytes)?;
+    if bytes.len() as u64 > LONGEST_CHECKPOINT {
+        return Err(io::Error::other(format!(
+            "it is larger than {} MB",
+            LONGEST_CHECKPOINT / 1_000_000
+        )));
+    }
+    String::from_utf8(bytes).map_err(|_| io::Error::other("it is not UTF-8 text"))
 }
 
 fn text_of_table(source: impl Read) -> Result<String, String> {

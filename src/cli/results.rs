@@ -5,7 +5,7 @@ use crate::{
         batch::Shard,
         console::Trouble,
         input,
-        output::{Existing, Target},
+        output::{self, Existing, Target},
     },
     report::csv::Table,
 };
@@ -98,8 +98,30 @@ pub fn apart(files: &[PathBuf], ending: &str) -> Result<(), Trouble> {
     Ok(())
 }
 
+/// Refuses a folder that is a file, or whose name is that of a figure.
+pub fn folder(folder: &Path) -> Result<(), Trouble> {
+    let shown = folder.display();
+    if folder.is_dir() {
+        return Ok(());
+    }
+    if folder.exists() {
+        return Err(Trouble::usage(
+            format!("`{shown}` is a file, where a folder is asked for"),
+            "name a folder; it is made where there is none",
+        ));
+    }
+    if output::format(folder).is_ok() {
+        return Err(Trouble::usage(
+            format!("`{shown}` is the name of a figure, where a folder is asked for"),
+            "name a folder; its files are named by what they show",
+        ));
+    }
+    Ok(())
+}
+
 /// Makes a folder where there is none.
 pub fn make(folder: &Path) -> Result<(), Trouble> {
+    self::folder(folder)?;
     fs::create_dir_all(folder).map_err(|found| {
         Trouble::Failure(format!(
             "the folder `{}` cannot be made: {found}",

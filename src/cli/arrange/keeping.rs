@@ -4,12 +4,12 @@ use crate::{
     cli::{
         chain,
         console::Trouble,
+        input,
         output::{Existing, Target},
     },
     layout::{Progress, State},
 };
 use std::{
-    fs,
     path::{Path, PathBuf},
     time::{Duration, Instant},
 };
@@ -23,7 +23,7 @@ pub fn state(resume: Option<&Path>, digest: &str) -> Result<State, Trouble> {
         return Ok(State::new(digest));
     };
     let name = path.display();
-    let text = fs::read_to_string(path).map_err(|fault| {
+    let text = input::checkpoint(path).map_err(|fault| {
         Trouble::usage(
             format!("`{name}` cannot be read: {fault}"),
             "name the file that --checkpoint wrote",

@@ -51,6 +51,8 @@ pub(super) fn lines(text: &str) -> Vec<Line> {
         .comment(Some(b'#'))
         .from_reader(body.as_bytes());
     let mut found = Vec::new();
+    // Lines before a place that was counted up to.
+    let mut counted = (0, 0);
     let mut record = csv::StringRecord::new();
     // Text is UTF-8 and rows may be of any length, so that no row can fail.
     while reader.read_record(&mut record).unwrap_or(false) {
@@ -58,6 +60,8 @@ pub(super) fn lines(text: &str) -> Vec<Line> {
         let end = reader.position().byte() as usize;
         let start = content(body, at.byte() as usize);
         let raw = body.get(start..end).unwrap_or_default();
+        let passed = body.get(counted.1..start).unwrap_or_default();
+        counted = (counted.0 + passed.matches('\n').count(), start);
         let raw = raw.trim_end_matches(['\r', '\n']);
         if record.iter().all(|cell| cell.trim().is_empty()) {
             continue;
@@ -71,7 +75,7 @@ pub(super) fn lines(text: &str) -> Vec<Line> {
             }
         });
         found.push(Line {
-            number: body[..start].matches('\n').count() + 1,
+            number: counted.0 + 1,
             span: shift + start..shift + start + raw.len(),
             cells: cells.collect(),
             separator,
