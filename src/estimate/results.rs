@@ -568,6 +568,12 @@ impl TorqueSweep {
         matches!(self.required, Some((_, Limit::Least)))
     }
 
+    /// The minimum of the curve where separation lets it stand; below, the faces may part before it.
+    pub fn held_minimum(&self) -> Option<Minimum> {
+        let least = self.window.least().map_or(0.0, |least| least.torque);
+        self.minimum.filter(|minimum| minimum.torque >= least)
+    }
+
     /// Whether the gap between the bolts, which grows with the force, matters and is not known.
     pub fn gap_unknown(&self) -> bool {
         self.cautions

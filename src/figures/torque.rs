@@ -442,7 +442,7 @@ fn band_name(confidence: Option<f64>) -> String {
 fn best_name(sweep: &TorqueSweep) -> &'static str {
     if sweep.resists() {
         "highest that strength allows"
-    } else if sweep.minimum.is_some() {
+    } else if sweep.held_minimum().is_some() {
         "minimum"
     } else {
         "lowest that strength allows"

@@ -41,8 +41,8 @@ pub fn worse(sweep: &TorqueSweep) -> Option<Worse> {
     }
     let beyond = sweep.best?;
     let nominal = |point: &TorquePoint| point.source_to_sink.nominal;
-    let lowest = match sweep.minimum {
-        Some(minimum) => minimum.source_to_sink,
+    let lowest = match between_rows(sweep) {
+        Some(best) => best.source_to_sink,
         None => nominal(sweep.points.iter().find(|point| point.torque >= beyond)?),
     };
     let worst = sweep
@@ -174,7 +174,7 @@ pub fn torque_in(sweep: &TorqueSweep, units: System) -> String {
 
 /// The best torque where it is no row: the minimum between two, or the limit of strength.
 fn between_rows(sweep: &TorqueSweep) -> Option<Minimum> {
-    sweep.minimum.or(sweep.at_limit)
+    sweep.held_minimum().or(sweep.at_limit)
 }
 
 /// The row of the best torque, or the one nearest to it where it lies between two.
@@ -220,6 +220,14 @@ fn advice(sweep: &TorqueSweep, best: Option<usize>) -> String {
     for line in remarks(sweep, index) {
         let _ = writeln!(text, "         {line}");
     }
+    if let (Some(lower), None) = (sweep.minimum, sweep.held_minimum()) {
+        let _ = writeln!(
+            text,
+            "minimum  {} N·m: {} K/W at nominal, where the least force may let the faces part",
+            four(lower.torque),
+            four(lower.source_to_sink)
+        );
+    }
     if let Some(Worse { beyond, at, rise }) = worse(sweep) {
         let _ = writeln!(
             text,
@@ -236,7 +244,7 @@ fn advice(sweep: &TorqueSweep, best: Option<usize>) -> String {
 fn praise(sweep: &TorqueSweep, there: f64) -> String {
     if sweep.resists() {
         "highest source to sink that strength allows here".to_owned()
-    } else if sweep.minimum.is_some() {
+    } else if sweep.held_minimum().is_some() {
         format!("the minimum of source to sink, {} K/W", four(there))
     } else {
         "lowest source to sink that strength allows here".to_owned()
@@ -246,7 +254,7 @@ fn praise(sweep: &TorqueSweep, there: f64) -> String {
 /// What must be known of the best torque before it is taken for one.
 fn remarks(sweep: &TorqueSweep, index: usize) -> Vec<&'static str> {
     let mut lines = Vec::new();
-    if sweep.minimum.is_some() {
+    if sweep.held_minimum().is_some() {
         lines.push(
             "found between the rows; below it the contact lacks force, beyond it the gap opens",
         );

@@ -17,14 +17,14 @@ const STEP_INWARDS: f64 = 0.05;
 
 /// The minimum of source to sink at nominal around the lowest swept torque that strength allows.
 ///
-/// None where that is an end of the window, which is what separation asks for and strength allows: the
-/// curve then only falls or only rises in it. Every torque tried is solved on the field of the chain.
+/// None where that is an end of the window: the curve then only falls or only rises in it. Every
+/// torque tried is solved on the field of the chain.
 ///
 /// Checked: `the_minimum_in_air_lies_between_swept_torques`.
 pub(super) fn minimum(
     chain: &Chain,
     (group, case): (usize, usize),
-    (points, [least, largest]): (&[TorquePoint], [Option<f64>; 2]),
+    (points, largest): (&[TorquePoint], Option<f64>),
 ) -> Result<Option<Minimum>, Failure> {
     let solved = |torque: f64| -> Result<Minimum, Failure> {
         let chain = chain.with_torque(group, torque)?;
@@ -41,11 +41,7 @@ pub(super) fn minimum(
         added_by_joint: point.added_by_joint.nominal,
     };
     let allowed = points.iter().take_while(|point| point.passes).count();
-    let first = points
-        .iter()
-        .take_while(|point| least.is_some_and(|least| point.torque < least))
-        .count();
-    let low = (first..allowed).min_by(|one, other| {
+    let low = (0..allowed).min_by(|one, other| {
         let key = |index: &usize| points[*index].source_to_sink.nominal;
         key(one).total_cmp(&key(other))
     });
@@ -53,13 +49,7 @@ pub(super) fn minimum(
         return Ok(None);
     };
     let middle = known(&points[index]);
-    let left = if index > first {
-        Some(known(&points[index - 1]))
-    } else {
-        // Between the least torque and the first swept one beyond it the curve may turn.
-        let end = least.filter(|least| first > 0 && *least < middle.torque);
-        end.map(&solved).transpose()?
-    };
+    let left = index.checked_sub(1).map(|left| known(&points[left]));
     let right = if index + 1 < allowed {
         Some(known(&points[index + 1]))
     } else {

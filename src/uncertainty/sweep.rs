@@ -113,8 +113,8 @@ pub fn sweep_beside(
     let minimum = match required {
         Some((_, Limit::Least)) => None,
         _ if chain.knows_the_gap() => {
-            let ends = [least, largest.map(|(torque, _)| torque)];
-            minimum(chain, (options.group, case), (points.as_slice(), ends))?
+            let window = (points.as_slice(), largest.map(|(torque, _)| torque));
+            minimum(chain, (options.group, case), window)?
         }
         _ => None,
     };
@@ -139,11 +139,12 @@ pub fn sweep_beside(
             added_by_joint: path.added_by_joint,
         })
     };
-    let row = match minimum {
+    let held = minimum.filter(|found| least.is_none_or(|least| found.torque >= least));
+    let row = match held {
         Some(minimum) => Some(minimum.torque),
         None => best_of(&points, (least, required)),
     };
-    let at_limit = if minimum.is_some() {
+    let at_limit = if held.is_some() {
         None
     } else {
         let ends = [least, largest.map(|(largest, _)| largest)];
