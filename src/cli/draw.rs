@@ -49,6 +49,10 @@ pub struct Draw {
     #[arg(long, value_name = "N", default_value_t = 1)]
     interface: usize,
     /// Write the maps as tables too, SI: one CSV of every interface in every case
+    ///
+    /// Values are read between the columns of the solution, each for itself. Beside the bolts, where they
+    /// change fastest, conductance times temperature difference does not add up to the heat: take that from
+    /// the results or from `estimate --nodes`.
     #[arg(long)]
     maps: bool,
     #[command(flatten)]
