@@ -68,21 +68,34 @@ pub fn estimate_in(estimate: &Estimate, detail: Detail, units: System) -> String
     format!("{heading}\n{}", told_in(&parts.join("\n"), units))
 }
 
-/// A finished text in a system of units, its lines no longer than a screen is wide.
+/// A finished text in a system of units, its sentences no longer than a screen is wide; rows of a table,
+/// which have wide gaps between words, and labels stay as they are set.
 pub(super) fn told_in(text: &str, units: System) -> String {
     if units == System::Si {
         return text.to_owned();
     }
     let mut told = String::new();
     for line in units.restated(text).lines() {
-        if line.chars().count() > WIDTH {
-            let indent = line.len() - line.trim_start().len();
+        let indent = line.len() - line.trim_start().len();
+        let parts = line.trim_start().split("  ");
+        let gaps = parts
+            .filter(|part| !part.is_empty())
+            .count()
+            .saturating_sub(1);
+        if line.chars().count() <= WIDTH || gaps > 1 {
+            let _ = writeln!(told, "{line}");
+        } else if gaps == 1 {
+            let rest = line.rfind("  ").map_or(indent, |at| at + 2);
+            let _ = writeln!(
+                told,
+                "{}",
+                wrapped_after(line, line[..rest].chars().count())
+            );
+        } else {
             let body = wrapped(line.trim_start(), WIDTH - indent, 2);
             let margin = " ".repeat(indent);
             let body = body.replace('\n', &format!("\n{margin}"));
             let _ = writeln!(told, "{margin}{body}");
-        } else {
-            let _ = writeln!(told, "{line}");
         }
     }
     told

@@ -177,3 +177,26 @@ fn the_page_tells_inches_and_what_is_drawn_says_that_it_is_not() {
     }
     assert!(lists > 1);
 }
+
+/// Rows stand under their headings in every system, and labels keep their room.
+#[test]
+fn tables_stay_tables_in_every_system() {
+    let joint = [
+        "estimate",
+        "joints/rf_flange.toml",
+        "--field",
+        "cone",
+        "--draws",
+        "0",
+    ];
+    for units in ["si", "shop", "inch"] {
+        let told = told(&[&joint[..], &["--units", units]].concat());
+        let mut lines = told
+            .lines()
+            .skip_while(|line| !line.starts_with("per bolt  "));
+        let [heading, row] = [lines.next(), lines.next()].map(|line| line.expect("a table"));
+        // Right-aligned columns end where their headings end.
+        assert_eq!(heading.chars().count(), row.chars().count(), "{told}");
+        assert!(row.starts_with("bolts 1 to 2  "), "{told}");
+    }
+}
