@@ -63,8 +63,10 @@ fn codes_in_source() -> BTreeSet<String> {
 }
 
 fn codes_in_registry() -> BTreeSet<String> {
-    // A law is explained to whoever asks for it; no fault or caution carries its code.
-    let told = entries().iter().filter(|entry| entry.kind != Kind::Law);
+    // Laws and topics are explained to whoever asks for them; no fault or caution carries their code.
+    let told = entries()
+        .iter()
+        .filter(|entry| !matches!(entry.kind, Kind::Law | Kind::Topic));
     told.map(|entry| entry.code.to_owned()).collect()
 }
 

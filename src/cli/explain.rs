@@ -1,4 +1,4 @@
-//! `explain`: what a code means and what to do about it.
+//! `explain`: what a code means and what to do about it, and the topics of the handbook.
 
 use crate::{
     cli::{
@@ -17,10 +17,11 @@ use clap::Args;
 use serde_json::{Value, json};
 use std::fmt::Write;
 
-/// Explain a caution, a fault or a law by its code
+/// Explain a caution, a fault or a law by its code, or a topic such as joint-file
 #[derive(Debug, Args)]
 pub struct Explain {
-    /// Code as printed, such as preload/over-yield; without one all are listed
+    /// Code as printed, such as preload/over-yield, or a topic such as heat; without one all are
+    /// listed
     code: Option<String>,
     /// Print JSON
     #[arg(long)]
@@ -83,6 +84,7 @@ fn kind(kind: Kind) -> &'static str {
         Kind::Caution(Gravity::Note) => "caution",
         Kind::Caution(Gravity::Standing) => "caution that goes with every estimate",
         Kind::Law => "law",
+        Kind::Topic => "topic",
     }
 }
 

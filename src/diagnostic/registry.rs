@@ -1,4 +1,4 @@
-//! What every code means and what to do about it.
+//! What every code means and what to do about it; the laws with equation, range and source.
 
 use std::sync::LazyLock;
 
@@ -13,6 +13,7 @@ mod material;
 mod preload;
 mod pressure;
 mod service;
+mod topics;
 
 /// What a code stands for.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
@@ -23,6 +24,8 @@ pub enum Kind {
     Caution(Gravity),
     /// A law or a convention the results rest on.
     Law,
+    /// A part of the handbook: how something is stated or asked for.
+    Topic,
 }
 
 impl Kind {
@@ -32,6 +35,7 @@ impl Kind {
             Self::Fault => "fault",
             Self::Caution(_) => "caution",
             Self::Law => "law",
+            Self::Topic => "topic",
         }
     }
 }
@@ -77,14 +81,18 @@ pub struct Law {
     pub source: &'static str,
 }
 
-/// The entry of a code. A law may be called without its family: `planes` is `law/planes`.
+/// The entry of a code. Laws and topics may be called without their family: `planes` is
+/// `law/planes`, `heat` is `topic/heat`.
 pub fn entry(code: &str) -> Option<&'static Entry> {
-    entries()
-        .iter()
-        .find(|entry| entry.code == code || entry.code.strip_prefix("law/") == Some(code))
+    entries().iter().find(|entry| {
+        let short = ["law/", "topic/"]
+            .iter()
+            .find_map(|family| entry.code.strip_prefix(family));
+        entry.code == code || short == Some(code)
+    })
 }
 
-/// Every entry: faults, then cautions, then laws, each family together.
+/// Every entry: faults, then cautions, laws and topics, each family together.
 pub fn entries() -> &'static [Entry] {
     static ENTRIES: LazyLock<Vec<Entry>> = LazyLock::new(|| {
         let mut entries = [
@@ -97,12 +105,14 @@ pub fn entries() -> &'static [Entry] {
             service::ENTRIES,
             fit::ENTRIES,
             laws::ENTRIES,
+            topics::ENTRIES,
         ]
         .concat();
         entries.sort_by_key(|entry| match entry.kind {
             Kind::Fault => 0,
             Kind::Caution(_) => 1,
             Kind::Law => 2,
+            Kind::Topic => 3,
         });
         entries
     });
@@ -182,9 +192,19 @@ mod tests {
     use super::*;
 
     #[test]
-    fn a_law_answers_without_its_family() {
-        assert_eq!(entry("planes"), entry("law/planes"));
-        assert!(entry("planes").is_some());
+    fn a_law_and_a_topic_answer_without_their_family() {
+        for (short, code) in [("planes", "law/planes"), ("heat", "topic/heat")] {
+            assert_eq!(entry(short).map(|entry| entry.code), Some(code));
+        }
+        let mut shorts: Vec<&str> = entries()
+            .iter()
+            .filter(|entry| matches!(entry.kind, Kind::Law | Kind::Topic))
+            .filter_map(|entry| Some(entry.code.split_once('/')?.1))
+            .collect();
+        let all = shorts.len();
+        shorts.sort_unstable();
+        shorts.dedup();
+        assert_eq!(shorts.len(), all, "two share a short name");
         assert_eq!(entry("no/such-code"), None);
     }
 
@@ -206,7 +226,11 @@ mod tests {
                 !entry.title.is_empty() && !entry.title.ends_with('.'),
                 "{code}"
             );
-            for text in [entry.meaning, entry.remedy] {
+            let paragraphs = match entry.kind {
+                Kind::Topic => entry.meaning.split("\n\n").collect(),
+                _ => vec![entry.meaning],
+            };
+            for text in paragraphs.into_iter().chain([entry.remedy]) {
                 assert!(text.len() > 20 && text.ends_with('.'), "{code}: {text}");
                 assert!(
                     !text.contains("  ") && !text.contains('\n'),
@@ -225,12 +249,14 @@ mod tests {
                 "{}",
                 entry.code
             );
-            assert_eq!(
-                entry.code.starts_with("law/"),
-                entry.kind == Kind::Law,
-                "{}",
-                entry.code
-            );
+            for (family, kind) in [("law/", Kind::Law), ("topic/", Kind::Topic)] {
+                assert_eq!(
+                    entry.code.starts_with(family),
+                    entry.kind == kind,
+                    "{}",
+                    entry.code
+                );
+            }
             if let Some(law) = entry.law {
                 assert!(
                     [law.equation, law.range, law.source]
