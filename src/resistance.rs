@@ -1,5 +1,14 @@
 //! Local conductance to the resistances of the joint.
 //!
+//! Four results, each between named planes ([`Path`]):
+//!
+//! ```text
+//! contact         G = ∫ h dA                       faces isothermal; an upper bound of conductance
+//! node to node    R = (T̄₁ − T̄₂)/Q                  mean temperatures of the whole plates
+//! added by joint  R = R(path) − R(path, perfect)   what the joint costs
+//! source to sink  R = (T̄_source − T̄_sink)/Q        the requirement
+//! ```
+//!
 //! `cells` cuts the plates into one cell per bolt and its rings, once per geometry; `path` solves
 //! the heat through them for one set of forces and conductances; `field` reads the pressure field.
 //! `plan_grid` solves the heat with the plates whole, for several bolts; `calibration` carries its

@@ -108,6 +108,61 @@ fn no_source_file_outgrows_its_idea() {
     assert!(long.is_empty(), "{long:#?}");
 }
 
+/// The handbook is the documentation of the source: a public law that states an equation says where
+/// it holds and where it comes from.
+#[test]
+fn every_public_law_tells_its_range_and_its_source() {
+    const LAWS: &[&str] = &[
+        "joint",
+        "preload",
+        "pressure",
+        "conductance",
+        "resistance",
+        "uncertainty",
+        "fit",
+    ];
+    let (mut laws, mut silent) = (0, Vec::new());
+    each_file(Path::new("src"), &mut |path, text| {
+        let room = path.iter().nth(1).map(Path::new).and_then(Path::file_stem);
+        if !room.is_some_and(|room| LAWS.iter().any(|law| room == *law)) {
+            return;
+        }
+        let mut told = String::new();
+        for line in before_tests(text).lines().map(str::trim_start) {
+            if let Some(words) = line.strip_prefix("///") {
+                told.push_str(&words.to_lowercase());
+                told.push('\n');
+                continue;
+            }
+            if line.starts_with("#[") {
+                continue;
+            }
+            let is_law = told.contains("```text")
+                && (line.starts_with("pub fn ") || line.starts_with("pub const fn "));
+            if is_law {
+                laws += 1;
+                for words in [&["valid", "exact"][..], &["source"]] {
+                    if !words.iter().any(|word| told.contains(word)) {
+                        silent.push(format!("{}: {line}: no {}", path.display(), words[0]));
+                    }
+                }
+            }
+            told.clear();
+        }
+    });
+    assert!(laws > 60, "the search found {laws} laws");
+    assert!(silent.is_empty(), "{silent:#?}");
+}
+
+/// The front page leads through every module.
+#[test]
+fn the_front_page_names_every_module() {
+    let page = fs::read_to_string("src/lib.rs").expect("source is text");
+    for module in ORDER {
+        assert!(page.contains(&format!("[`{module}`]")), "{module}");
+    }
+}
+
 /// Whether `text` holds the path `crate::other`, alone or in a braced group.
 fn mentions(text: &str, other: &str) -> bool {
     text.match_indices("crate::").any(|(at, prefix)| {

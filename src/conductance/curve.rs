@@ -28,6 +28,8 @@ impl Curve {
     /// h(ln p) = a + b s + c s² + d s³   through four points of the law around each piece
     /// ```
     ///
+    /// Valid: five decades below that pressure, within 1e-6 of the law; below them the law itself answers.
+    /// Source: interpolation by cubics, textbook.
     /// Checked: `curve_follows_its_law`, `a_law_with_a_corner_is_not_tabulated`.
     pub fn up_to(law: &Local, highest_pressure: f64) -> Option<Self> {
         let end = highest_pressure.ln();

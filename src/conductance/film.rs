@@ -29,6 +29,7 @@ impl Coated {
     ///
     /// The spot is that of a load of 10⁻³ of the hardness, whatever the pressure: a depth that
     /// grew with pressure would let the conductance of thin soft layers fall with load.
+    /// Valid: one depth for every pressure, that of light load.
     /// Source: geometry of the Vickers pyramid; its use here is a judgement.
     pub fn indentation_depth(&self) -> f64 {
         (2.0 * PI).sqrt() * self.spot_radius / 7.0
@@ -91,7 +92,7 @@ pub fn hardness(coated: &Coated) -> Option<f64> {
 /// | `k_l`, `k_s` | conductivity of layer, of substrate | W/(m K) | |
 ///
 /// `w` is the share of the temperature drop on the axis of an isothermal spot that falls within
-/// the depth `t`. Exact for a thick layer, for none, and for equal conductivities; between, the
+/// the depth `t`. Valid: one layer on a substrate. Exact for a thick layer, for none, and for equal conductivities; between, the
 /// closest simple form.
 /// Source: derived for this program from the field of an isothermal disc.
 /// Checked: `spot_conductivity_has_its_limits`.

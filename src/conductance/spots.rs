@@ -61,6 +61,7 @@ impl Surfaces {
     /// a = √(8/π) (σ/m) exp(λ²/2) erfc(λ/√2),   ½ erfc(λ/√2) = share
     /// ```
     ///
+    /// `σ` is the roughness of both faces in quadrature, m, `m` their slope, 1. Valid: Gaussian rough faces.
     /// Source: Cooper, Mikic & Yovanovich 1969, from memory.
     /// Checked: `spots_carry_the_area_and_the_conductance`.
     pub fn spot_radius(&self, share: f64) -> f64 {
@@ -95,7 +96,8 @@ pub fn slope_from_roughness(roughness: f64) -> f64 {
 /// h(P) = h(P_max) (P / P_max)^½
 /// ```
 ///
-/// `pressure_ratio` is `P/P_max`, 0 … 1. Published exponents 0.4–0.6; less accurate below 4e5 Pa.
+/// `pressure_ratio` is `P/P_max`. Valid: 0 to 1, the first unloading; published exponents 0.4 to 0.6, less accurate below
+/// 4e5 Pa.
 /// Source: working rule after Mikic 1971, from memory.
 /// Checked: `unloading_stays_above_first_loading`.
 pub fn unloading_factor(pressure_ratio: f64) -> f64 {

@@ -35,6 +35,8 @@ impl Regression {
     /// min Σ wᵢ (yᵢ − Σ βⱼ (xᵢ − x₀)ʲ)²,   √W X = Q R,   β = R⁻¹ Qᵀ √W y
     /// ```
     ///
+    /// Valid: more points than coefficients, weights that are inverse variances.
+    /// Source: weighted least squares by the factors of Q and R, textbook.
     /// Checked: `certified_regression_is_met`, `weighted_lines_are_those_of_numpy`.
     pub fn of(points: &[Point], centre: f64, degree: usize) -> Option<Self> {
         let (count, terms) = (points.len(), degree + 1);

@@ -42,6 +42,7 @@ pub struct Outlier {
 /// most a third of the points can stand apart. Sound tables raise an alarm in about 5 % of cases,
 /// of six points in 8 % (a model in NumPy of this procedure, 800 tables each).
 ///
+/// Valid: points that scatter evenly about one straight line.
 /// Source: forward order of Hadi & Simonoff 1993, outward tests of Rosner 1983, both from memory.
 /// Checked: `the_child_of_the_textbook_stands_apart`, `outliers_do_not_mask_one_another`,
 /// `sound_points_rarely_raise_an_alarm`.

@@ -95,6 +95,8 @@ impl PowerLaw {
     /// Where the points scatter more than is stated, and by more than chance, covariance and
     /// scatter are widened by χ²/(N − 2) and the reach is Student's.
     ///
+    /// Valid: readings above zero at two places at least, scatter of one size in logarithms.
+    /// Source: weighted least squares, textbook.
     /// Checked: `known_laws_are_recovered_in_nine_of_ten`, `weighted_lines_are_those_of_numpy`.
     pub fn of(readings: &[Reading]) -> Option<Self> {
         let points = points(readings);

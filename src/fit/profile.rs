@@ -153,7 +153,8 @@ impl Profile {
     /// interval = {θ: −2 ln L(θ) ≤ least + t²},   t the 95 % quantile of N(0, 1), or of Student's t
     /// ```
     ///
-    /// where the scatter was found from the readings. Source: Wilks 1938, from memory.
+    /// where the scatter was found from the readings. Valid: an unknown that the readings fix inside its range; ends of the
+    /// range are told as ends. Source: Wilks 1938, from memory.
     /// Checked: `marginal_interval_is_that_of_the_linear_gaussian_case`,
     /// `a_known_roughness_is_recovered_in_nine_of_ten` in `tests/fit.rs`.
     pub fn of(model: &Curve, likelihood: &Likelihood, target: &Target) -> Self {

@@ -19,7 +19,7 @@ impl Plate {
     /// | `r` | distance from the centre of the outline (of a polygon: of its bounds) | m |
     /// | `R` | half the diagonal of the bounds; of a disc its radius | m |
     ///
-    /// Valid: on the plate, where 0 ≤ g ≤ |h|. Checked: `a_bow_opens_the_middle_or_the_corners`.
+    /// Valid: on the plate, where 0 ≤ g ≤ |h|. Source: definition of this program. Checked: `a_bow_opens_the_middle_or_the_corners`.
     pub fn flatness_gap(&self, point: [f64; 2], height: f64) -> f64 {
         let [x, y] = self.own(point);
         let centre = self.outline.centre();

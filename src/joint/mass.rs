@@ -45,6 +45,7 @@ impl Joint {
     /// | `d₂`, `l` | pitch diameter; grip with nut and two pitches, or with the engaged thread | m |
     ///
     /// Valid: fasteners within about 10 %, which catalogue masses of standard screws allow to check.
+    /// Source: volumes of simple bodies, of this program.
     /// Checked: `mass_of_a_joint_by_hand`, `screws_weigh_what_tables_say`.
     pub fn mass(&self) -> Mass {
         let mut left_out = Vec::new();

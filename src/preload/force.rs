@@ -205,6 +205,7 @@ impl Spread {
     /// | `t` | tool tolerance | 1 | `tolerance` |
     /// | `r` | relaxation | 1 | `relaxation` |
     ///
+    /// Valid: `Γ`, `t` and `r` below 1, taken as extremes that meet.
     /// Source: NASA preload practice, F(1 ± Γ) seen quoted; the tolerance factors and the relaxation of the
     /// minimum from memory of NASA-STD-5020.
     /// Checked: `worked_example_of_nasa_practice`.
@@ -216,8 +217,13 @@ impl Spread {
         ])
     }
 
-    /// Tightening factor of a scatter alone, 1: `α_A = F_max/F_min = (1 + Γ)/(1 − Γ)`.
+    /// Tightening factor of a scatter alone, 1.
     ///
+    /// ```text
+    /// α_A = F_max/F_min = (1 + Γ)/(1 − Γ)
+    /// ```
+    ///
+    /// Valid: a scatter `Γ` even about the nominal force, below 1.
     /// Source: VDI 2230. Checked: `tightening_factor_and_scatter_agree`.
     pub fn tightening_factor(&self) -> f64 {
         (1.0 + self.scatter) / (1.0 - self.scatter)

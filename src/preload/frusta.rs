@@ -22,6 +22,14 @@ pub struct Frustum {
 /// k = 0.5774 π E d / ln[ (1.155 t + D − d)(D + d) / ((1.155 t + D + d)(D − d)) ]
 /// ```
 ///
+/// | symbol | quantity | SI unit | field |
+/// |---|---|---|---|
+/// | `E` | Young's modulus of the layer | Pa | `youngs_modulus` |
+/// | `t` | thickness of the frustum | m | `thickness` |
+/// | `D` | diameter of its smaller end | m | `diameter` |
+/// | `d` | diameter of the bolt, of the hole as well | m | `bolt_diameter` |
+///
+/// Valid: a layer wider than the frustum; `D` above `d`.
 /// Source: Shigley's Mechanical Engineering Design, chapter 8.
 /// Checked: `frusta_of_shigley_8_22_and_8_24`.
 pub fn frustum_stiffness(frustum: &Frustum, bolt_diameter: f64) -> f64 {
@@ -98,6 +106,8 @@ impl TextbookBolt {
     /// k = E / (l_d/A_d + l_t/A_t)
     /// ```
     ///
+    /// `l_d`, `A_d` are length and area of the plain shank in the grip, `l_t`, `A_t` those of the thread, with its
+    /// stress area. Valid: within the grip; head and nut are taken as rigid.
     /// Source: Shigley's Mechanical Engineering Design, chapter 8.
     /// Checked: `frusta_of_shigley_8_22_and_8_24`.
     pub fn stiffness(&self) -> f64 {

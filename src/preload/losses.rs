@@ -92,6 +92,8 @@ impl Compliance {
     /// F_Z = f_Z / (δ_S + δ_P)
     /// ```
     ///
+    /// `f_Z` is the settling of the whole stack, m; `δ_S` and `δ_P` the resiliences of bolt and plates, m/N.
+    /// Valid: bolt and plates elastic.
     /// Source: VDI 2230-1. Checked: `example_a_of_the_resilience_chain`.
     pub fn settling_loss(&self, settling: f64) -> f64 {
         settling / (self.bolt + self.plates)
@@ -115,8 +117,13 @@ impl Compliance {
         growth(plates, bolt) / (self.bolt + self.plates)
     }
 
-    /// Load factor Φ of a load that enters under head and nut, 1: `δ_P/(δ_S + δ_P)`.
+    /// Load factor of a load that enters under head and nut, 1.
     ///
+    /// ```text
+    /// Φ = δ_P/(δ_S + δ_P)
+    /// ```
+    ///
+    /// Valid: a load along the bolt's axis, faces in contact; one that enters nearer the faces takes less.
     /// Source: VDI 2230-1. Checked: `example_a_of_the_resilience_chain`.
     pub fn load_factor(&self) -> f64 {
         self.plates / (self.bolt + self.plates)
@@ -222,6 +229,9 @@ impl Losses {
     /// F = F_assembly (1 − r)(1 − i), then Δl = growth − f_Z by `Elasticity::after`
     /// ```
     ///
+    /// `r` is the share lost to relaxation, `i` that to neighbours tightened later, `f_Z` the settling, m, and growth
+    /// what the bolt grows less than the plates when the temperature changes, m.
+    /// Valid: losses that act one after another and bodies that stay elastic.
     /// Source: the sum of VDI 2230-1 and of NASA preload practice; 5 % short-term relaxation from memory.
     /// Checked: `open_joint_carries_nothing`.
     pub fn balance(&self, assembly_force: f64, elasticity: &Elasticity) -> f64 {

@@ -72,6 +72,8 @@ impl BoltCompliance {
 /// A_N = π d²/4,  A₃ = π d₃²/4
 /// ```
 ///
+/// `l` are lengths, m; `d` is the nominal and `d₃` the root diameter, m; `E` and `E_M` are the moduli of bolt and of
+/// the part that holds the thread, Pa. Valid: bolts of one material, elastic.
 /// Source: VDI 2230-1, substitute lengths from memory.
 /// Checked: `example_a_of_the_resilience_chain`, `example_b_of_the_resilience_chain`.
 pub fn bolt_compliance(bolt: &BoltShape<'_>) -> BoltCompliance {
@@ -136,6 +138,8 @@ impl Clamped {
     /// tapped:  0.348 + 0.013 ln β + 0.193 ln y,    β = l_K/d_w, y = D_A/d_w
     /// ```
     ///
+    /// `l_K` is the grip, `d_w` the outer diameter of the seat, `D_A` that of the clamped body, m.
+    /// Valid: one bolt on its axis, `D_A` above `d_w`.
     /// Source: VDI 2230-1, coefficients from memory.
     pub fn cone_tangent(&self) -> f64 {
         let slender = self.grip / self.seat_diameter;
@@ -202,9 +206,14 @@ pub struct StackLayer {
 
 /// Compliance of a stack of layers inside the substitute cone, head side first, m/N.
 ///
+/// ```text
+/// δ_P = Σ ∫ dz / (E_i A(z))     A(z): area of the cone at depth z, less the hole
+/// ```
+///
 /// Each layer is cut where the cone changes its form and every piece is a frustum or a sleeve in closed form.
 /// With equal layers this is [`Clamped::stretch`] over E.
 ///
+/// Valid: layers as wide as the cone; one angle for all, whatever their moduli.
 /// Source: VDI 2230-1, cone cut into layers. Checked: `equal_layers_are_one_body`.
 pub fn stack_compliance(clamped: &Clamped, layers: &[StackLayer]) -> f64 {
     let tangent = clamped.cone_tangent();

@@ -113,6 +113,11 @@ impl SpringStack {
 
     /// Deflection under a force, m; not above that of the flat stack, below no force negative.
     ///
+    /// ```text
+    /// s = m s_1(F/n)     n discs nested, m sets head to head, s_1 the deflection of one disc
+    /// ```
+    ///
+    /// Valid: discs alike, loaded along their axis.
     /// Source: forces of nested discs and deflections of sets add; friction between nested discs
     /// (2 to 3 % for each, from memory) is left out.
     /// Checked: `nested_discs_add_force_and_sets_add_travel`.

@@ -93,6 +93,7 @@ impl Stack {
 /// plate edge or the distance to the nearest bolt of the group, whichever is smaller. A longer plain shank
 /// makes the bolt stiffer and the losses larger.
 ///
+/// Valid: as [`bolt_compliance`] and [`stack_compliance`].
 /// Source: VDI 2230-1 by [`bolt_compliance`] and [`stack_compliance`].
 /// Checked: `stack_of_a_joint_repeats_example_a`, `tapped_stack_clamps_the_head_plate_alone`.
 pub fn stack(joint: &Joint, fastener: &Fastener) -> Stack {
@@ -143,6 +144,10 @@ pub fn stack(joint: &Joint, fastener: &Fastener) -> Stack {
 }
 
 /// Settling of the whole stack by the guide values, axial, m.
+///
+/// ```text
+/// f_Z = f_thread + s f_seat + n f_interface     s = 2 with a nut, 1 tapped; n inner interfaces
+/// ```
 ///
 /// The class of roughness is that of the roughest face of the joint: Rz taken as 5 Rq.
 /// Valid: M4 and larger. Source: VDI 2230-1 guide values, from memory.

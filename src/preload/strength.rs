@@ -65,7 +65,10 @@ pub fn von_mises(thread: &Thread, load: Load, rule: TorsionRule) -> f64 {
 /// (F/A₀)² + 3 ((F g + T_run)/W)² = σ²
 /// ```
 ///
-/// `g` is the thread lever and `σ` the stress allowed. Zero when the running torque alone exceeds it.
+/// `g` is the thread lever, m; `σ` the stress allowed, Pa; `A₀` the area at the stress diameter, m², and `W` its
+/// resistance to torsion, m³. Zero when the running torque alone exceeds it.
+/// Valid: tightening alone, thread fully plastic in torsion.
+/// Source: VDI 2230-1, editions from 2001 on (see `law/strength-use`).
 pub fn force_at_stress(thread: &Thread, twist: Twist, stress: f64) -> Option<f64> {
     let area = core_area(thread);
     let resistance = TorsionRule::Plastic.resistance(thread.stress_diameter);
@@ -122,8 +125,13 @@ pub fn assembly_preload(thread: &Thread, target: &Target, rule: TorsionRule) -> 
         / (1.0 + 3.0 * ratio * ratio).sqrt()
 }
 
-/// Proof load, N: stress area times proof stress.
+/// Proof load, N.
 ///
+/// ```text
+/// F_p = A_s S_p
+/// ```
+///
+/// `A_s` is the stress area of the thread, m², `S_p` the proof stress, Pa. Valid: tension without torsion.
 /// Source: ISO 898-1:2013. Checked: `proof_loads_of_iso_898`.
 pub fn proof_load(thread: &Thread, proof_stress: f64) -> f64 {
     thread.stress_area * proof_stress
@@ -135,6 +143,7 @@ pub fn proof_load(thread: &Thread, proof_stress: f64) -> f64 {
 /// p = F / (π (r_o² − r_i²))
 /// ```
 ///
+/// `r_o` and `r_i` are the outer and inner radius of the annulus, m. Valid: the mean; the edge bears more.
 /// Source: VDI 2230-1, F over the bearing annulus.
 /// Checked: `head_pressure_of_an_m6_passes_the_limit_of_aw_6082`.
 pub fn seat_pressure(seat: &Seat, force: f64) -> f64 {

@@ -100,6 +100,8 @@ impl Rings {
 ///
 /// e is the radius between the rings and Θ the angle over which the plate is there: 2π for a
 /// whole ring, less where an edge or a neighbour's cell cuts it.
+/// Valid: heat that runs along the radius, rings narrow against the change of Θ.
+/// Source: the logarithm of Fourier's law between concentric circles; its use on cut rings is of this program.
 pub fn shapes(hole_radius: f64, edges: &[f64], areas: &[f64]) -> (Vec<f64>, Vec<f64>) {
     let bounds = |ring: usize| (edges[ring].max(hole_radius), edges[ring + 1]);
     let angles: Vec<f64> = areas

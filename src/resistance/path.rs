@@ -91,6 +91,7 @@ impl Cells {
     /// from the bolt alone, which is too good. Against three-dimensional solutions in vacuum: 30 %
     /// too low for four bolts in the corners, 65 % too high where the source lies over two of six
     /// bolts. `plan_grid` does better and calibrates this.
+    /// Source: rings in series and cells side by side, of this program.
     pub fn solve<H: Fn(f64) -> f64>(&self, load: &Load<H>) -> Path {
         let cells = &self.fine;
         let mut faces: Vec<Option<Faces>> = Vec::with_capacity(cells.len());

@@ -175,6 +175,12 @@ impl PlanGrid {
     }
 
     /// Source to sink alone, K/W: what a comparison of two grids needs.
+    ///
+    /// ```text
+    /// R = (T̄_source − T̄_sink)/Q,   Σ_neighbours k t (T_i − T_j) + h_ij A_i (T_i − T′_i) = q_i A_i
+    /// ```
+    ///
+    /// Valid: plates thin against the spacing of their bolts, so that each is one sheet on the plan.
     pub fn source_to_sink<H: Fn(f64) -> f64>(&self, load: &Load<H>) -> Result<f64, Failure> {
         let plates = self.cells.plates(load.conductivity);
         let whole = self.whole(&plates, &self.conductance(load))?;

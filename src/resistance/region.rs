@@ -194,7 +194,7 @@ impl Region {
     /// A(r) = ½ ∮ min(r, ρ)² dθ
     /// ```
     ///
-    /// closed form on every piece of the boundary.
+    /// Exact: closed form on every piece of the boundary. Source: sector formula of an area in polar coordinates.
     pub fn area_within(&self, radius: f64) -> f64 {
         self.pieces
             .iter()

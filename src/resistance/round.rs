@@ -152,11 +152,15 @@ impl Condensed {
     }
 
     /// Source to sink with perfect contact wherever both plates are, K/W; 0 where held rims meet.
+    ///
+    /// The same heat in radius and height, without joint resistance: a lower bound of the joint's.
     pub fn perfect_contact(&self) -> f64 {
         self.perfect
     }
 
     /// Source to sink with perfect contact inside the contact radius and none beyond, K/W.
+    ///
+    /// What the convergence of heat costs by itself.
     pub fn perfect_in_zone(&self) -> f64 {
         self.zone
     }

@@ -80,6 +80,7 @@ struct Sums {
 /// The interval is Student's over 16 independent scramblings. A constant function has no indices:
 /// their values are not numbers. `room` makes what one thread needs.
 ///
+/// Valid: inputs or groups of inputs that are independent.
 /// Source: Saltelli et al. 2010, Comput. Phys. Commun. 181, 259, table 2 (b) and (f); the latter is
 /// Jansen 1999, Comput. Phys. Commun. 117, 35; both from memory.
 /// Checked: `ishigami_has_its_published_indices`, `g_function_has_its_analytic_indices`.

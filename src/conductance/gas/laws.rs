@@ -35,6 +35,7 @@ pub struct Gap {
 ///
 /// `load` is P/H, H the contact hardness of the softer face. Held below 1e-6 (4.75 σ: the tallest
 /// peaks) and above 0.3, so that faces which just part keep the gap of their peaks.
+/// Valid: Gaussian rough faces.
 /// Source: area of overlap of a Gaussian surface, exact.
 /// Checked: `separation_fit_agrees_with_the_exact_form` in `validation_conductance/gap.rs`,
 /// `separation_is_held_at_its_ends`.
@@ -98,7 +99,8 @@ impl Gap {
     /// h = k/(Y + M)
     /// ```
     ///
-    /// Always below [`Gap::integral`], by up to 32 % where a thin jump meets a heavy load.
+    /// `k` is the conductivity of the gas, `Y` the separation of the mean planes and `M` the gas parameter, m.
+    /// Valid: a mean gap without regard to its spread. Always below [`Gap::integral`], by up to 32 % where a thin jump meets a heavy load.
     /// Source: Mechanical Engineers' Handbook, 3rd ed., vol. 4, p. 375.
     /// Checked: `corrected_gas_law_agrees_with_the_integral` in `validation_conductance/gap.rs`.
     pub fn simple(&self, gas: &GapGas) -> f64 {

@@ -37,6 +37,7 @@ impl Asperities {
     /// H_e = m E′ / √2
     /// ```
     ///
+    /// `m` is the slope of the asperities, 1, and `E′` the modulus of both faces, Pa. Valid: asperities that stay elastic.
     /// Source: Mikic 1974, from memory; that the group is P/(E′ m) is seen.
     pub fn elastic_hardness(&self) -> f64 {
         self.slope * self.elastic_modulus / SQRT_2

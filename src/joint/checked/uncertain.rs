@@ -259,6 +259,7 @@ impl Joint {
     /// All heat `Q` crosses the films `h` on areas `A`, and the mean sink surface is weighted with what it
     /// conducts, so that this holds however the heat divides. Holes in the back are left out of the areas,
     /// which divide among several films alone.
+    /// Valid: films to one coolant, held even over their areas. Source: the balance of heat.
     /// Checked: `films_side_by_side_drop_as_their_sum`.
     pub fn coolant_factor(&self, places: &[f64]) -> f64 {
         let zones: Vec<(f64, f64)> = match &self.sink {

@@ -164,6 +164,7 @@ impl Conduction {
     ///
     /// `A` and `f` are those of [`Conduction::solve`]. The resistance is off by the square of what the
     /// temperatures are off by; how much that is the caller finds at states that are solved.
+    /// Valid: between the states of the family. Source: the method of Ritz on a reduced basis.
     /// Checked: `states_between_solved_ones_are_sums_of_these`.
     pub fn combined(
         &mut self,

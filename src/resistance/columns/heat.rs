@@ -79,7 +79,8 @@ impl Heat {
     /// R ≥ max(R_perfect, 1/(1/(Σ t/(k A) + Σ 1/G) + Σ G_bolt))
     /// ```
     ///
-    /// Both hold for the local conductance as given. Checked: `resistance_keeps_above_its_bounds`.
+    /// Valid: both bounds hold for the local conductance as given. Source: whatever conducts without
+    /// resistance in a network lowers that of the whole, textbook, from memory. Checked: `resistance_keeps_above_its_bounds`.
     pub fn path(&self, perfect: &Perfect) -> Path {
         Path {
             contact: self.contact,
