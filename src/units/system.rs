@@ -161,8 +161,8 @@ impl System {
     /// A text for people with every number that SI prints a unit behind told in this system.
     ///
     /// `0.3 to 2 µm`, `12.3 (10 to 14) kN` and `x 12, y 30 mm` are one group of numbers with one
-    /// unit. Digits stay as many as were printed, two at least and four at most. A number whose unit is not known is
-    /// left as it stands, with its unit.
+    /// unit. The last digit told counts no less than the last one that was printed; two digits are told at least
+    /// and four at most. A number whose unit is not known is left as it stands, with its unit.
     ///
     /// ```
     /// use ringsum::units::System;
@@ -236,12 +236,11 @@ impl System {
         let largest = values.iter().map(|value| value.abs()).fold(0.0, f64::max);
         let unit = self.instead(symbol, largest * size)?;
         for (&(start, end), value) in group.iter().zip(&values).rev() {
-            let written = &told[start..end];
-            let kept = significant(written);
+            let factor = size / unit.size;
             // A change of name alone changes no digit.
-            if (unit.size / size - 1.0).abs() > 1e-12 {
-                let new = rounded(value * size / unit.size, kept);
-                told.replace_range(start..end, &new);
+            if (factor - 1.0).abs() > 1e-12 {
+                let kept = significant(value * factor, last_place(&told[start..end]) * factor);
+                told.replace_range(start..end, &rounded(value * factor, kept));
             }
         }
         Some(unit.name)
@@ -299,11 +298,21 @@ fn decimals(written: &str) -> usize {
         .map_or(0, |(_, places)| places.len())
 }
 
-/// Digits that a written number has, two at least and four at most.
-fn significant(written: &str) -> usize {
-    let mantissa = written.split('e').next().unwrap_or(written);
-    let digits: String = mantissa.chars().filter(char::is_ascii_digit).collect();
-    digits.trim_start_matches('0').len().clamp(2, 4)
+/// What the last digit of a written number counts.
+fn last_place(written: &str) -> f64 {
+    let (mantissa, power) = written.split_once('e').unwrap_or((written, "0"));
+    let power: i32 = power.parse().unwrap_or(0);
+    10.0_f64.powi(power - decimals(mantissa) as i32)
+}
+
+/// Significant digits of a value that is known to a step: the last one counts no less than the step,
+/// so that 1.017 N·m is 9.00 in·lbf and not 9.001. Two at least and four at most.
+fn significant(value: f64, step: f64) -> usize {
+    // Rounding aside, a power of ten is its own place.
+    const NEAR: f64 = 1e-6;
+    let place = (step.log10() - NEAR).ceil();
+    let first = (value.abs().log10() + NEAR).floor();
+    (first - place + 1.0).clamp(2.0, 4.0) as usize
 }
 
 /// A number with so many significant digits.
@@ -361,25 +370,27 @@ mod tests {
                 "within 1.000 in of a bolt axis",
             ),
             ("flatness 50.8 µm closes", "flatness 2.00 mil closes"),
-            ("Rq 0.8 to 1.27 µm", "Rq 31 to 50.0 µin"),
+            ("Rq 0.8 to 1.27 µm", "Rq 31 to 50 µin"),
             ("Rq 25 nm", "Rq 0.98 µin"),
             ("at least 1.70 N·m", "at least 15.0 in·lbf"),
+            // Stated as 9 in·lbf, which is 1.01686 N·m.
+            ("stated 1.017 N·m", "stated 9.00 in·lbf"),
             ("at most 54.23 N·m", "at most 40.00 ft·lbf"),
             (
                 "force 4.448 (2.224 to 8.896) kN at",
-                "force 1000 (500.0 to 2000) lbf at",
+                "force 1000 (500 to 2000) lbf at",
             ),
             ("about 6.895 MPa", "about 1000 psi"),
-            ("yield 276 MPa", "yield 40.0 ksi"),
-            ("modulus 68.9 GPa", "modulus 9.99 Msi"),
-            ("gas at 101.3 kPa", "gas at 14.69 psi"),
+            ("yield 276 MPa", "yield 40 ksi"),
+            ("modulus 68.9 GPa", "modulus 10 Msi"),
+            ("gas at 101.3 kPa", "gas at 14.7 psi"),
             ("5678 W/(m²·K), then", "1000 Btu/(h·ft²·°F), then"),
-            ("170 W/(m·K)", "98.2 Btu/(h·ft·°F)"),
+            ("170 W/(m·K)", "98 Btu/(h·ft·°F)"),
             ("189000 W/(m²·K)", "33280 Btu/(h·ft²·°F)"),
             ("23.6 µm/(m·K)", "13.1 µin/(in·°F)"),
             ("64.52 cm² of", "10.00 in² of"),
             ("0.5 K·cm²/W", "0.078 °C·in²/W"),
-            ("2700 kg/m³", "0.09754 lb/in³"),
+            ("2700 kg/m³", "0.0975 lb/in³"),
             ("x 25.4, y 50.8 mm of box", "x 1.00, y 2.00 in of box"),
             ("sink at 20.0 °C", "sink at 68.0 °F"),
             ("sink at −40 °C", "sink at -40 °F"),
