@@ -1,7 +1,7 @@
 //! Resistance against torque: what tightening buys, and where the bolt ends it.
 
 use crate::{
-    estimate::{Band, Side, TorqueSweep},
+    estimate::{Band, BestBy, Side, TorqueSweep},
     figures::{
         FigureError,
         axis::{self, Axis, BELOW, Grid},
@@ -440,12 +440,12 @@ fn band_name(confidence: Option<f64>) -> String {
 }
 
 fn best_name(sweep: &TorqueSweep) -> &'static str {
-    if sweep.resists() {
-        "highest that strength allows"
-    } else if sweep.held_minimum().is_some() {
-        "minimum"
-    } else {
-        "lowest that strength allows"
+    match (sweep.best_by(), sweep.resists()) {
+        (BestBy::Minimum, _) => "minimum",
+        (BestBy::Strength, false) => "lowest that strength allows",
+        (BestBy::Strength, true) => "highest that strength allows",
+        (BestBy::Separation, false) => "lowest that separation allows",
+        (BestBy::Separation, true) => "highest that separation allows",
     }
 }
 

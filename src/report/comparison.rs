@@ -288,7 +288,7 @@ fn notes(found: &Comparison) -> String {
             _ => format!(", by the growth on the {} level", loss.resolution),
         };
         tell(&format!(
-            "lost bolt: the single loss that costs most, at nominal{level}; its hole stays, like bolts are tried once"
+            "lost bolt: the single loss that costs most, at nominal{level}; its hole stays, of like bolts one is solved"
         ));
     }
     for joint in &losses {

@@ -122,7 +122,7 @@ fn draws(ranking: &Ranking) -> String {
     if let Some(error) = ranking.draw_error {
         let _ = write!(
             line,
-            "; read from surfaces through solved states, off by {} where they were tried",
+            "; read from surfaces through solved states, off by {} at the states solved to check them",
             percent(error)
         );
     }

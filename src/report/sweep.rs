@@ -1,7 +1,7 @@
 //! Resistance against torque, for the terminal.
 
 use crate::{
-    estimate::{Minimum, TorquePoint, TorqueSweep},
+    estimate::{BestBy, Minimum, TorquePoint, TorqueSweep},
     joint::Limit,
     report::{
         number::{band, four, percent, plain},
@@ -128,7 +128,13 @@ pub fn torque_in(sweep: &TorqueSweep, units: System) -> String {
         sweep.case,
         sweep.field,
         sweep.resolution,
-        if sweep.bends {
+        // Without draws there is no low and no high.
+        if sweep.bends
+            && sweep
+                .points
+                .iter()
+                .any(|point| point.source_to_sink.high.is_some())
+        {
             "low and high hold for faces bent convex, flat and concave, since flatness leaves it open\n"
         } else {
             ""
@@ -242,12 +248,11 @@ fn advice(sweep: &TorqueSweep, best: Option<usize>) -> String {
 
 /// What makes the best torque the best.
 fn praise(sweep: &TorqueSweep, there: f64) -> String {
-    if sweep.resists() {
-        "highest source to sink that strength allows here".to_owned()
-    } else if sweep.held_minimum().is_some() {
-        format!("the minimum of source to sink, {} K/W", four(there))
-    } else {
-        "lowest source to sink that strength allows here".to_owned()
+    let extreme = if sweep.resists() { "highest" } else { "lowest" };
+    match sweep.best_by() {
+        BestBy::Minimum => format!("the minimum of source to sink, {} K/W", four(there)),
+        BestBy::Strength => format!("{extreme} source to sink that strength allows here"),
+        BestBy::Separation => format!("{extreme} source to sink that separation allows"),
     }
 }
 
@@ -258,11 +263,9 @@ fn remarks(sweep: &TorqueSweep, index: usize) -> Vec<&'static str> {
         lines.push(
             "found between the rows; below it the contact lacks force, beyond it the gap opens",
         );
-    } else if let Some(limit) = sweep.at_limit {
-        let least = sweep.window.least();
-        let least = least.is_some_and(|least| least.torque >= limit.torque);
-        lines.push(if least {
-            "it is the least torque that keeps the faces together: separation bounds it"
+    } else if sweep.at_limit.is_some() {
+        lines.push(if sweep.best_by() == BestBy::Separation {
+            "it is the least torque that keeps the faces together"
         } else {
             "it is the limit of strength itself, between two rows"
         });
@@ -270,7 +273,7 @@ fn remarks(sweep: &TorqueSweep, index: usize) -> Vec<&'static str> {
         lines.push(if sweep.resists() {
             "it is the first torque swept: less resists more, and what the bolts must hold decides"
         } else {
-            "it is the first torque swept: the minimum may lie below it; --from tries less"
+            "it is the first torque swept: the minimum may lie below it; --from starts lower"
         });
     } else if sweep.resists() {
         lines.push("the requirement asks for at least so much resistance: more is better");

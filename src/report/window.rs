@@ -207,10 +207,10 @@ fn span(range: &Range) -> String {
 fn named(range: &Range, by: &str) -> String {
     match by {
         FIRST => format!(
-            "{FIRST} ({} N·m; --from tries less)",
+            "{FIRST} ({} N·m; --from starts lower)",
             four(range.low.torque)
         ),
-        LAST => format!("{LAST} ({} N·m; --to tries more)", four(range.high.torque)),
+        LAST => format!("{LAST} ({} N·m; --to goes higher)", four(range.high.torque)),
         by => by.to_owned(),
     }
 }
@@ -254,7 +254,7 @@ fn shut(window: &TorqueWindow) -> String {
     }
 }
 
-/// What would open the window: changes tried, then what the limits say of those not tried.
+/// What would open the window: changes worked through, then what the limits say of the others.
 fn opening(window: &TorqueWindow) -> Vec<String> {
     let mut lines = Vec::new();
     for trial in &window.trials {
@@ -278,8 +278,8 @@ fn opening(window: &TorqueWindow) -> Vec<String> {
         alike.map(|trial| trial.change.as_str()).collect()
     };
     for (judged, how) in [
-        (Judged::AsSwept, "tried alone and not enough"),
-        (Judged::Fast, "solved anew, fast, and not enough"),
+        (Judged::AsSwept, "alone not enough"),
+        (Judged::Fast, "solved anew, fast, alone not enough"),
     ] {
         let shut = shut(&judged);
         if !shut.is_empty() {
@@ -304,7 +304,7 @@ fn opening(window: &TorqueWindow) -> Vec<String> {
         ));
     } else if window.heat.as_ref().is_some_and(Vec::is_empty) && !window.plates_fail {
         lines.push(
-            "not tried: what is not named above, such as finer or flatter faces and thicker plates; the \
+            "not looked at: what is not named above, such as finer or flatter faces and thicker plates; the \
              drivers of `estimate` tell which"
                 .to_owned(),
         );

@@ -3,6 +3,7 @@
 use ringsum::units::System;
 use ringsum::{
     estimate::{Band, Minimum, RingRow, Temperatures},
+    figures::{self, Drawing},
     joint::{Limit, Medium},
     report::{
         json, media, sweep,
@@ -64,6 +65,50 @@ fn the_limit_of_strength_itself_is_the_best_torque_where_more_is_better() {
     swept.at_limit = None;
     let report = sweep::torque(&swept);
     assert!(report.contains(", at the stated torque\n"), "{report}");
+}
+
+#[test]
+fn where_separation_bounds_the_best_torque_it_is_named_and_not_strength() {
+    let mut swept = torque_sweep();
+    let least = swept.window.limits[0].torque;
+    swept.best = Some(least);
+    swept.at_limit = Some(Minimum {
+        torque: least,
+        source_to_sink: 0.099,
+        added_by_joint: 0.055,
+    });
+    for (required, extreme) in [(Limit::Most, "lowest"), (Limit::Least, "highest")] {
+        swept.required = Some((0.115, required));
+        let report = sweep::torque(&swept);
+        let praise = format!("{extreme} source to sink that separation allows");
+        assert!(report.contains(&praise), "{report}");
+        assert!(
+            report.contains("it is the least torque that keeps the faces together\n"),
+            "{report}"
+        );
+        let drawing = Drawing::Torque(Box::new(swept.clone()));
+        let svg = figures::svg(&drawing).expect("a drawing");
+        assert!(svg.contains(&format!("{extreme} that separation allows")));
+        assert!(!svg.contains("that strength allows"));
+    }
+}
+
+#[test]
+fn without_draws_nothing_is_said_of_low_and_high() {
+    let said = "low and high hold for faces bent";
+    let mut swept = torque_sweep();
+    swept.bends = true;
+    assert!(sweep::torque(&swept).contains(said));
+    for point in &mut swept.points {
+        for band in [
+            &mut point.source_to_sink,
+            &mut point.added_by_joint,
+            &mut point.contact,
+        ] {
+            *band = Band::nominal(band.nominal);
+        }
+    }
+    assert!(!sweep::torque(&swept).contains(said));
 }
 
 #[test]

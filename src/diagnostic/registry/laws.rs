@@ -522,7 +522,7 @@ pub(super) const ENTRIES: &[Entry] = &[
              where tightening has given nine tenths of what it can: the joint's own conductance, 1/R added by \
              the joint, reaches 90 % of that at the best torque.",
             "Tighten inside the window, near its middle where the tool is coarse. Where none is left, the \
-             limits named tell which side to move; changes that were tried are told with their windows. It \
+             limits named tell which side to move; changes that were worked through are told with their windows. It \
              is no torque card: codes and a responsible engineer decide.",
         ],
     ),

@@ -75,7 +75,7 @@ fn stays_open(case: &CaseResult) -> Option<Caution> {
         ),
         Flatness::Stated { height, left, flat } => format!(
             "faces flat within {:.0} µm keep a gap of up to {:.1} µm if convex and {:.1} µm if concave, where \
-             flat ones would have {:.1} µm; nominal is flat, low and high are bent",
+             flat ones would have {:.1} µm; nominal is flat, and a band holds for each way",
             height * 1e6,
             left[0] * 1e6,
             left[1] * 1e6,

@@ -5,7 +5,7 @@ use crate::{
         Caution,
         registry::{self, Gravity},
     },
-    estimate::{Driver, TorqueSweep},
+    estimate::{BestBy, Driver, TorqueSweep},
     report::{
         comparison::strength,
         drivers::{not_told_apart, share},
@@ -119,10 +119,12 @@ pub(super) fn torque(sweep: &TorqueSweep) -> Torque {
         ));
     }
     if let Some(best) = sweep.best {
-        told.push(format!(
-            "Thermally best torque that strength allows: {} N·m.",
-            four(best)
-        ));
+        let why = match sweep.best_by() {
+            BestBy::Minimum => ", the minimum of the curve",
+            BestBy::Strength => " that strength allows",
+            BestBy::Separation => " that keeps the faces together",
+        };
+        told.push(format!("Thermally best torque{why}: {} N·m.", four(best)));
     }
     Torque {
         stated: stated.unwrap_or(0),

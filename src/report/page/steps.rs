@@ -255,7 +255,7 @@ fn scatter(estimate: &Estimate, case: &CaseResult) -> Step {
         )];
         if let Some(error) = case.draw_error {
             told.push(format!(
-                "Draws are read from surfaces through solved states, off by {} at most where they were tried.",
+                "Draws are read from surfaces through solved states, off by {} at most at the states solved to check them.",
                 percent(error)
             ));
         }

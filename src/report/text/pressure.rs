@@ -74,7 +74,7 @@ pub fn field(case: &CaseResult, detail: Detail) -> String {
         line(health(&solved.health));
         if let Some(error) = case.draw_error {
             line(format!(
-                "draws are read from surfaces through solved states, off by {} where they were tried",
+                "draws are read from surfaces through solved states, off by {} at the states solved to check them",
                 percent(error)
             ));
         }
