@@ -523,17 +523,6 @@ pub struct Minimum {
     pub added_by_joint: f64,
 }
 
-/// What makes the best torque of a sweep the best.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
-pub enum BestBy {
-    /// The curve turns there.
-    Minimum,
-    /// Strength forbids what would be better.
-    Strength,
-    /// What would be better lets the faces part.
-    Separation,
-}
-
 /// Resistance against the torque of one fastener group, the others as stated.
 #[derive(Clone, Debug, PartialEq)]
 pub struct TorqueSweep {
@@ -583,18 +572,6 @@ impl TorqueSweep {
     pub fn held_minimum(&self) -> Option<Minimum> {
         let least = self.window.least().map_or(0.0, |least| least.torque);
         self.minimum.filter(|minimum| minimum.torque >= least)
-    }
-
-    /// What makes the best torque the best.
-    pub fn best_by(&self) -> BestBy {
-        if !self.resists() && self.held_minimum().is_some() {
-            return BestBy::Minimum;
-        }
-        let least = self.window.least();
-        match self.at_limit.zip(least) {
-            Some((limit, least)) if least.torque >= limit.torque => BestBy::Separation,
-            _ => BestBy::Strength,
-        }
     }
 
     /// Whether the gap between the bolts, which grows with the force, matters and is not known.

@@ -1,5 +1,7 @@
 //! What is told of the torque window: its limits, its ends, and what would open it.
 
+use crate::estimate::TorqueSweep;
+
 /// From which side a limit bounds the torque.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub enum Side {
@@ -139,5 +141,30 @@ impl TorqueWindow {
         let ranges = self.heat.as_ref()?;
         let holds = |range: &Range| range.low.torque <= torque && torque <= range.high.torque;
         Some(ranges.iter().any(holds))
+    }
+}
+
+/// What makes the best torque of a sweep the best.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum BestBy {
+    /// The curve turns there.
+    Minimum,
+    /// Strength forbids what would be better.
+    Strength,
+    /// What would be better lets the faces part.
+    Separation,
+}
+
+impl TorqueSweep {
+    /// What makes the best torque the best.
+    pub fn best_by(&self) -> BestBy {
+        if !self.resists() && self.held_minimum().is_some() {
+            return BestBy::Minimum;
+        }
+        let least = self.window.least();
+        match self.at_limit.zip(least) {
+            Some((limit, least)) if least.torque >= limit.torque => BestBy::Separation,
+            _ => BestBy::Strength,
+        }
     }
 }

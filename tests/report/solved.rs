@@ -70,7 +70,8 @@ fn the_limit_of_strength_itself_is_the_best_torque_where_more_is_better() {
 #[test]
 fn where_separation_bounds_the_best_torque_it_is_named_and_not_strength() {
     let mut swept = torque_sweep();
-    let least = swept.window.limits[0].torque;
+    let least = 1.3;
+    swept.window.limits[0].torque = least;
     swept.best = Some(least);
     swept.at_limit = Some(Minimum {
         torque: least,

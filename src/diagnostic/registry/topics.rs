@@ -236,8 +236,8 @@ pub(super) const ENTRIES: &[Entry] = &[
             "A file appears whole or not at all, and never over another without `--force`: it is written as \
              `.ringsum-…` in the folder it belongs to and then renamed. Every target is checked before anything \
              is computed.",
-            "Ctrl-C and failures leave nothing behind. A process that is killed outright (kill -9, power) cannot \
-             clean up: delete the `.ringsum-…` file it may leave, nothing reads it.",
+            "Failures leave nothing behind. A process that is stopped in the very moment of writing (Ctrl-C, \
+             kill -9, power) cannot clean up: delete the `.ringsum-…` file it may leave, nothing reads it.",
         ],
     ),
 ];

@@ -107,17 +107,6 @@ pub(super) fn torque(sweep: &TorqueSweep) -> Torque {
             _ => sentence(line),
         })
         .collect();
-    if let Some(both) = &sweep.window.both {
-        let place = if (both.low.torque..=both.high.torque).contains(&sweep.stated) {
-            "lies inside"
-        } else {
-            "lies outside"
-        };
-        told.push(format!(
-            "The stated torque of {} N·m {place}.",
-            four(sweep.stated)
-        ));
-    }
     if let Some(best) = sweep.best {
         let why = match sweep.best_by() {
             BestBy::Minimum => ", the minimum of the curve",
