@@ -26,7 +26,7 @@
 //!    is their sum at one pressure.
 //! 5. **Local conductance to resistance.** [`resistance`]: [`resistance::columns`] solves the heat in three
 //!    dimensions, [`resistance::round`] in radius and height, [`resistance::network`] and
-//!    [`resistance::plan_grid`] are the networks beside the cone. [`resistance::Path`] carries the four
+//!    [`mod@resistance::plan_grid`] are the networks beside the cone. [`resistance::Path`] carries the four
 //!    results, each between named planes.
 //! 6. **The chain on one page.** [`estimate`]: [`estimate::Chain`] takes a joint through all of it, and
 //!    gathers cautions and assumptions.

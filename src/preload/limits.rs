@@ -189,7 +189,7 @@ pub fn limits_in_service(fastener: &Fastener, force: f64) -> Vec<LimitUse> {
 /// when the preload is given.
 ///
 /// Valid: tightening alone; loads from outside are in [`limits_in_service`].
-/// Source: the parts, [`force_at_stress`](super::strength::force_at_stress) and what this module holds;
+/// Source: the parts, [`force_at_stress`] and what this module holds;
 /// 0.9 of yield as VDI 2230-1 uses it, from memory.
 pub fn limit_torques(fastener: &Fastener, supports: &Supports) -> Vec<(&'static str, f64)> {
     let Tightening::Torque(tightening) = &fastener.tightening else {
