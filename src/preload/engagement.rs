@@ -25,7 +25,7 @@ const INCH: f64 = 0.0254;
 /// ```
 ///
 /// A thread strips at rupture, and soft steels harden far beyond yield; 0.577 is von Mises at yield.
-/// Valid: steels below 400 MPa, austenitic ones below 300 MPa; every other metal at 0.577.
+/// Valid: steels below 4e8 Pa, austenitic ones below 3e8 Pa; every other metal at 0.577.
 /// Source: judgement. The factor of soft steel is set on the maker's trials of engaged length, 1.0 d for class 8.8
 /// in S235; that of austenitic steel is two thirds of `0.6 R_m`.
 /// Checked: `class_8_8_in_s235_needs_about_one_diameter`.
