@@ -65,7 +65,7 @@ pub fn von_mises(thread: &Thread, load: Load, rule: TorsionRule) -> f64 {
 /// (F/A₀)² + 3 ((F g + T_run)/W)² = σ²
 /// ```
 ///
-/// `g` is the thread lever and `σ` the stress allowed. Zero when the running torque alone exceeds it.
+/// `g` is the thread lever and `σ` the stress allowed. None when the running torque alone exceeds it.
 pub fn force_at_stress(thread: &Thread, twist: Twist, stress: f64) -> Option<f64> {
     let area = core_area(thread);
     let resistance = TorsionRule::Plastic.resistance(thread.stress_diameter);
