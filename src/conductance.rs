@@ -33,7 +33,6 @@ pub use curve::Curve;
 pub use gas::GapGas;
 pub use interface::{Face, Hardness, Interface, Layer};
 pub use local::{Conductance, Local};
-pub use spots::slope_from_roughness;
 
 #[cfg(test)]
 mod properties;

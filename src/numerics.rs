@@ -11,6 +11,7 @@ pub mod condensation;
 pub mod distribution;
 pub mod elements;
 pub mod grading;
+mod inner;
 pub mod interpolation;
 pub mod multigrid;
 pub mod polygon;

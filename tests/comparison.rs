@@ -1,8 +1,12 @@
 //! Joints side by side: odds, lost bolts, and what others measured of more bolts.
 
+#[path = "shared/joints.rs"]
+mod joints;
+
+use joints::{read, read_with};
 use ringsum::{
     estimate::{Chain, Choice, Fineness, Options, Realisation, Watch, worst_loss},
-    joint::{self, Joint},
+    joint::Joint,
     numerics::sampling::Sobol,
     uncertainty::{self, Comparison, Contender, Verdict, inputs},
 };
@@ -40,11 +44,6 @@ torque = { value = "2 N·m", tolerance = "6 %" }
 friction = { class = "B" }
 at = [["10 mm", "10 mm"], ["50 mm", "10 mm"], ["90 mm", "10 mm"], ["10 mm", "50 mm"], ["50 mm", "50 mm"], ["90 mm", "50 mm"]]
 "#;
-
-fn read(text: &str, sets: &[&str]) -> Joint {
-    let sets: Vec<String> = sets.iter().map(|set| (*set).to_owned()).collect();
-    joint::read_with(text, &sets).unwrap_or_else(|faults| panic!("{faults:#?}"))
-}
 
 fn compared(joints: &[&Joint], choice: Choice, options: &Options) -> Comparison {
     let chains: Vec<Chain> = joints
@@ -88,9 +87,9 @@ fn by_hand(chain: &Chain, names: &[&str], options: &Options) -> Vec<f64> {
 /// tool and faces but not the gas.
 #[test]
 fn odds_are_those_counted_by_hand() {
-    let vacuum = read(PLATES, &[]);
+    let vacuum = read(PLATES);
     // So little helium that neither joint wins in every draw.
-    let gas = read(
+    let gas = read_with(
         PLATES,
         &[
             "service.medium=helium",
@@ -134,14 +133,14 @@ fn odds_are_those_counted_by_hand() {
 
 #[test]
 fn like_joints_beat_each_other_in_half_of_the_draws() {
-    let joint = read(PLATES, &[]);
+    let joint = read(PLATES);
     let found = compared(&[&joint, &joint.clone()], Choice::Cone, &OPTIONS);
     let other = &found.joints[1];
     assert_eq!(found.best, 0);
     assert_eq!(other.odds, Some(0.5));
     assert_eq!(other.verdict, Some(Verdict::WithinError));
     // One torque tool sets both: the tighter joint wins in every draw, however wide the bands are.
-    let tighter = read(PLATES, &["fastener.torque.value=\"2.3 N·m\""]);
+    let tighter = read_with(PLATES, &["fastener.torque.value=\"2.3 N·m\""]);
     let found = compared(&[&joint, &tighter], Choice::Cone, &OPTIONS);
     assert_eq!(found.best, 1);
     assert_eq!(found.joints[0].odds, Some(1.0));
@@ -150,7 +149,7 @@ fn like_joints_beat_each_other_in_half_of_the_draws() {
 #[test]
 fn without_draws_nobody_knows_how_surely() {
     let [joint, thicker] =
-        [&[][..], &["plate.upper.thickness=\"8 mm\""]].map(|sets| read(PLATES, sets));
+        [&[][..], &["plate.upper.thickness=\"8 mm\""]].map(|sets| read_with(PLATES, sets));
     let none = Options { draws: 0, seed: 1 };
     let found = compared(&[&joint, &thicker], Choice::Cone, &none);
     assert_eq!(found.joints[0].verdict, Some(Verdict::AtNominal));
@@ -165,12 +164,12 @@ fn more_bolts_win_and_thicker_ones_do_not() {
     // Blocks of 50 mm hide the bolts: these are thinner.
     let blocks = include_str!("data/joints/bolted_blocks.toml")
         .replace("thickness = \"50 mm\"", "thickness = \"20 mm\"");
-    let four = read(&blocks, &[]);
-    let eight = read(
+    let four = read(&blocks);
+    let eight = read_with(
         &blocks,
         &["fastener.pattern={ kind = \"edge\", count = [3, 3], margin = \"12 mm\" }"],
     );
-    let thick = read(
+    let thick = read_with(
         &blocks,
         &["fastener.thread=M8", "fastener.torque=\"8 N·m\""],
     );
@@ -211,15 +210,12 @@ fn opened() -> Joint {
         "cutouts = [{ centre = [\"50 mm\", \"10 mm\"], diameter = \"4.5 mm\" }]\ncooled =",
         1,
     );
-    read(
-        &text.replacen("[\"50 mm\", \"10 mm\"], [\"90", "[\"90", 1),
-        &[],
-    )
+    read(&text.replacen("[\"50 mm\", \"10 mm\"], [\"90", "[\"90", 1))
 }
 
 #[test]
 fn a_lost_bolt_is_a_hole_without_one() {
-    let joint = read(PLATES, &[]);
+    let joint = read(PLATES);
     let choice = Choice::elastic(Fineness::Fast, MEMORY);
     let none = Options { draws: 0, seed: 1 };
     let solved = |joint: &Joint| {
@@ -252,12 +248,9 @@ fn a_lost_bolt_is_a_hole_without_one() {
 
 #[test]
 fn on_the_cone_the_hole_of_a_lost_bolt_stays() {
-    let joint = read(PLATES, &[]);
+    let joint = read(PLATES);
     let none = Options { draws: 0, seed: 1 };
-    let five = read(
-        &PLATES.replacen("[\"50 mm\", \"10 mm\"], [\"90", "[\"90", 1),
-        &[],
-    );
+    let five = read(&PLATES.replacen("[\"50 mm\", \"10 mm\"], [\"90", "[\"90", 1));
     let found =
         |joint: &Joint| uncertainty::estimate(joint, &none).expect("a number").cases[0].clone();
     let lost = found(&joint.without(&[2]).expect("five are left"));
@@ -276,7 +269,7 @@ fn on_the_cone_the_hole_of_a_lost_bolt_stays() {
 
 #[test]
 fn the_worst_loss_is_that_of_the_bolt_nobody_stands_in_for() {
-    let joint = read(PLATES, &[]);
+    let joint = read(PLATES);
     let chain = Chain::new(&joint).expect("a cone");
     let loss = worst_loss(&chain, Choice::Cone, (0, &Watch::none()))
         .expect("a number")
@@ -296,7 +289,7 @@ fn the_worst_loss_is_that_of_the_bolt_nobody_stands_in_for() {
     assert!((growth[loss.bolt - 1] / worst - 1.0).abs() < 1e-9);
     // Corners are alike, and so are the two in the middle.
     assert_eq!(loss.alike, if [2, 5].contains(&loss.bolt) { 2 } else { 4 });
-    let one = read(PLATES, &["fastener.at=[[\"50 mm\", \"30 mm\"]]"]);
+    let one = read_with(PLATES, &["fastener.at=[[\"50 mm\", \"30 mm\"]]"]);
     let one = Chain::new(&one).expect("a cone");
     let none = worst_loss(&one, Choice::Cone, (0, &Watch::none())).expect("a number");
     assert_eq!(none, None);

@@ -391,6 +391,28 @@ fn requirements_name_their_planes() {
     );
 }
 
+// Half of the sides of 80 and 60 mm is 40 and 30 mm; a disc of 60 mm has 30 mm. Beyond, the first bolt would
+// stand where the last one should.
+#[test]
+fn a_margin_past_the_middle_is_refused() {
+    let at = "at = [[\"10 mm\", \"10 mm\"], [\"70 mm\", \"50 mm\"]]";
+    let with = |pattern: &str| plain().replace(at, &format!("pattern = {pattern}"));
+    assert!(plain().contains(at));
+    for pattern in [
+        "{ kind = \"grid\", count = [2, 1], margin = \"55 mm\" }",
+        "{ kind = \"edge\", count = [3, 2], margin = \"41 mm\" }",
+    ] {
+        assert_eq!(codes(&with(pattern)), ["value/range"], "{pattern}");
+    }
+    // One bolt along a side stands in its middle, whatever the margin.
+    read(&with(
+        "{ kind = \"grid\", count = [2, 1], margin = \"31 mm\" }",
+    ));
+    let round = with("{ kind = \"circle\", count = 3, margin = \"40 mm\" }")
+        .replace("size = [\"80 mm\", \"60 mm\"]", "diameter = \"60 mm\"");
+    assert_eq!(codes(&round), ["value/range"]);
+}
+
 #[test]
 fn patterns_place_the_bolts() {
     let at = "at = [[\"10 mm\", \"10 mm\"], [\"70 mm\", \"50 mm\"]]";

@@ -10,10 +10,10 @@ use ringsum::{
         Face, Hardness, Interface, Layer, filler,
         film::{self, Coated},
         flatness::{Crowned, constriction},
-        radiation, slope_from_roughness,
+        radiation,
         spots::{Asperities, Mode, Surfaces, elastic_fit, harmonic_mean, plastic_fit},
     },
-    joint::{FillerKind, Law},
+    joint::{FillerKind, Law, slope_from_roughness},
 };
 
 /// Rows of numbers of a table, after the words at their head.

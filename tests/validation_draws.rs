@@ -9,6 +9,8 @@ mod bent;
 mod coverage;
 #[path = "validation_draws/heat.rs"]
 mod heat;
+#[path = "shared/joints.rs"]
+mod joints;
 #[path = "validation_draws/plan.rs"]
 mod plan;
 #[path = "validation_draws/remade.rs"]

@@ -4,11 +4,15 @@
 //! Each check stands beside a solution of its own: closed forms of one dimension, the series of
 //! Saint-Venant, a fin that radiates by the fourth power solved here, symmetry and superposition.
 
+#[path = "shared/joints.rs"]
+mod joints;
+
 use std::{f64::consts::PI, sync::Arc};
 
+use joints::{read, read_with};
 use ringsum::{
     estimate::{Chain, Choice, Fineness, Options, Realisation, State, Watch},
-    joint::{self, Joint, STEFAN_BOLTZMANN},
+    joint::{Joint, STEFAN_BOLTZMANN},
     numerics::columns::Plan,
     resistance::{
         Path,
@@ -64,11 +68,6 @@ at = [["50 mm", "20 mm"]]
     )
 }
 
-fn read(text: &str, sets: &[&str]) -> Joint {
-    let sets: Vec<String> = sets.iter().map(|set| (*set).to_owned()).collect();
-    joint::read_with(text, &sets).unwrap_or_else(|faults| panic!("{faults:#?}"))
-}
-
 fn state(joint: &Joint, fineness: Fineness) -> State {
     let choice = Choice::elastic(fineness, MEMORY);
     let chain = Chain::of(joint, choice, &Watch::none()).expect("a field");
@@ -87,7 +86,7 @@ fn path(joint: &Joint, fineness: Fineness) -> Path {
 
 /// Source to sink in perfect contact, K/W.
 fn perfect(upper: &str, lower: &str) -> f64 {
-    path(&read(&text(upper, lower), &[]), Fineness::Fast).perfect_contact
+    path(&read(&text(upper, lower)), Fineness::Fast).perfect_contact
 }
 
 /// The same of plates that conduct along themselves alone.
@@ -226,7 +225,7 @@ fn two_zones_superpose() {
             ]"
         );
         let lower = "cooled = { film = \"3000 W/(m²·K)\", centre = [\"50 mm\", \"20 mm\"], size = [\"90 mm\", \"10 mm\"] }";
-        let joint = read(&text(&upper, lower), &[]);
+        let joint = read(&text(&upper, lower));
         // The heat of the joint is the sum.
         let sum = joint.service.heat.expect("a sum");
         near(sum, first + second, 1e-12, "sum");
@@ -341,7 +340,7 @@ fn the_slope_meets_a_fin_that_radiates_by_the_fourth_power() {
         let cooled = format!("cooled = {{ radiation = {{ emissivity = {emissivity} }} }}");
         let file = text(&thin(heated), &thin(&cooled));
         let temperature = format!("service.temperature=\"{mean} K\"");
-        let joint = read(&file, &[&temperature, "service.heat=\"0.6 W\""]);
+        let joint = read_with(&file, &[&temperature, "service.heat=\"0.6 W\""]);
         let found = heat * path(&joint, Fineness::Fast).perfect_contact;
         // The rise is 6 % of the temperature; its square is what the slope leaves out, the hole beside.
         near(found, rise, 6e-3, "rise by the slope");
@@ -350,7 +349,7 @@ fn the_slope_meets_a_fin_that_radiates_by_the_fourth_power() {
         let stated = format!(
             "cooled = {{ radiation = {{ emissivity = {emissivity}, temperature = \"{surroundings} K\" }} }}"
         );
-        let joint = read(
+        let joint = read_with(
             &text(&thin(heated), &thin(&stated)),
             &["service.heat=\"0.6 W\""],
         );
@@ -360,7 +359,7 @@ fn the_slope_meets_a_fin_that_radiates_by_the_fourth_power() {
 
 #[test]
 fn a_radiating_back_has_no_coolant() {
-    let joint = read(
+    let joint = read_with(
         &text(
             "",
             "cooled = [{ radiation = 0.8 }, { film = \"5 W/(m²·K)\" }]",
@@ -389,13 +388,13 @@ fn a_layered_plate_is_an_isotropic_one_stretched() {
     };
     let layered =
         format!("{{ in_plane = \"{in_plane} W/(m·K)\", through = \"{through} W/(m·K)\" }}");
-    let found = path(&read(&file(&layered), &[]), Fineness::Fast);
+    let found = path(&read(&file(&layered)), Fineness::Fast);
     let stretch = f64::sqrt(in_plane / through);
     let mean = f64::sqrt(in_plane * through);
     let even = format!("{{ in_plane = \"{mean} W/(m·K)\", through = \"{mean} W/(m·K)\" }}");
     let thickness = format!("{} mm", 2.0 * stretch);
     let sets = ["upper", "lower"].map(|plate| format!("plate.{plate}.thickness=\"{thickness}\""));
-    let other = read(&file(&even), &sets.each_ref().map(String::as_str));
+    let other = read_with(&file(&even), &sets.each_ref().map(String::as_str));
     let expected = path(&other, Fineness::Fast);
     // Two grids of one problem: 0.96 % apart here at fast, 0.2 % at normal.
     near(
@@ -407,7 +406,7 @@ fn a_layered_plate_is_an_isotropic_one_stretched() {
     // Neither of the two conductivities alone comes near.
     for one in [in_plane, through] {
         let even = format!("{{ in_plane = \"{one} W/(m·K)\", through = \"{one} W/(m·K)\" }}");
-        let plain = path(&read(&file(&even), &[]), Fineness::Fast);
+        let plain = path(&read(&file(&even)), Fineness::Fast);
         let off = plain.perfect_contact / found.perfect_contact - 1.0;
         assert!(off.abs() > 0.2, "{one} W/(m K): {off}");
     }
@@ -424,10 +423,10 @@ fn round_plates_carry_layers_as_the_columns_do() {
     let film = "plate.lower.cooled={ film = \"2000 W/(m²·K)\" }";
     let heated = "plate.upper.heated={ diameter = \"24 mm\" }";
     let sets = [layers[0].as_str(), layers[1].as_str(), film, heated];
-    let round = path(&read(&text, &sets), Fineness::Normal);
+    let round = path(&read_with(&text, &sets), Fineness::Normal);
     // Only columns follow a bolt that stands aside.
     let aside = [&sets[..], &["fastener.at=[[\"1 µm\", \"0 mm\"]]"]].concat();
-    let columns = path(&read(&text, &aside), Fineness::Normal);
+    let columns = path(&read_with(&text, &aside), Fineness::Normal);
     // Plates of one conductivity differ by 0.5 and 2.5 % between the two ways: the columns smear the
     // edge of so small a contact, the more the sharper the flux turns there.
     near(
@@ -437,7 +436,7 @@ fn round_plates_carry_layers_as_the_columns_do() {
         "perfect",
     );
     near(columns.source_to_sink, round.source_to_sink, 0.045, "whole");
-    let even = path(&read(&text, &sets[2..]), Fineness::Normal);
+    let even = path(&read_with(&text, &sets[2..]), Fineness::Normal);
     assert!((even.perfect_contact / round.perfect_contact - 1.0).abs() > 0.05);
 }
 
@@ -454,7 +453,7 @@ fn bolted(sets: &[&str]) -> Joint {
         "fastener.preload=\"3 kN\"",
         "fastener.at=[[\"20 mm\", \"20 mm\"]]",
     ];
-    read(&text, &[&own[..], sets].concat())
+    read_with(&text, &[&own[..], sets].concat())
 }
 
 #[test]

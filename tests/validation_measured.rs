@@ -8,25 +8,24 @@
 mod contact;
 #[path = "evidence/note.rs"]
 mod evidence;
+#[path = "shared/joints.rs"]
+mod joints;
 #[path = "validation_measured/table.rs"]
 mod table;
 #[path = "validation_measured/trends.rs"]
 mod trends;
 
+use joints::fast;
 use ringsum::{
-    estimate::{CaseResult, Chain, Choice, Fineness, Options, Realisation, Watch},
-    joint::{self, Joint},
+    estimate::{CaseResult, Options, Realisation},
+    joint::Joint,
     resistance::Path,
     uncertainty,
 };
 
-/// More than any of these joints takes, bytes.
-const MEMORY: u64 = 4_000_000_000;
-
 /// A joint with its first case on the elastic field at `fast`.
 fn solved(joint: &Joint, draws: u32) -> CaseResult {
-    let choice = Choice::elastic(Fineness::Fast, MEMORY);
-    let chain = Chain::of(joint, choice, &Watch::none()).expect("a field");
+    let chain = fast(joint);
     let options = Options { draws, seed: 1 };
     let found = uncertainty::along(&chain, &options).expect("a number");
     found.cases.into_iter().next().expect("a case")
@@ -34,13 +33,7 @@ fn solved(joint: &Joint, draws: u32) -> CaseResult {
 
 /// Nominal resistances alone: no coarser level, no cone beside them.
 fn path(joint: &Joint) -> Path {
-    let choice = Choice::elastic(Fineness::Fast, MEMORY);
-    let chain = Chain::of(joint, choice, &Watch::none()).expect("a field");
+    let chain = fast(joint);
     let state = chain.state(0, &Realisation::default());
     state.expect("a state").path
-}
-
-fn read(text: &str, sets: &[&str]) -> Joint {
-    let sets: Vec<String> = sets.iter().map(|set| (*set).to_owned()).collect();
-    joint::read_with(text, &sets).unwrap_or_else(|faults| panic!("{faults:#?}"))
 }

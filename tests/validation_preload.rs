@@ -1,10 +1,13 @@
 //! Preload against printed tables, worked examples and independent forms; each tolerance has its reason.
 
+#[path = "shared/data.rs"]
+mod data;
 #[path = "evidence/note.rs"]
 mod evidence;
 
-use std::{f64::consts::PI, fs};
+use std::f64::consts::PI;
 
+use data::{data, number, numbers};
 use ringsum::{
     catalog::Thread,
     joint::Seat,
@@ -32,33 +35,6 @@ fn metric(diameter: f64, pitch: f64) -> Thread {
         stress_diameter,
         stress_area: PI / 4.0 * stress_diameter.powi(2),
     }
-}
-
-fn data(name: &str) -> toml::Table {
-    let path = format!("{}/tests/data/{name}", env!("CARGO_MANIFEST_DIR"));
-    fs::read_to_string(path)
-        .expect("the data file is beside the tests")
-        .parse()
-        .expect("the data file is TOML")
-}
-
-fn number(row: &toml::Value, key: &str) -> f64 {
-    float(&row[key])
-}
-
-fn float(value: &toml::Value) -> f64 {
-    value
-        .as_float()
-        .unwrap_or_else(|| value.as_integer().expect("a number") as f64)
-}
-
-fn numbers(row: &toml::Value, key: &str) -> Vec<f64> {
-    row[key]
-        .as_array()
-        .expect("a list")
-        .iter()
-        .map(float)
-        .collect()
 }
 
 fn rows<'a>(table: &'a toml::Table, key: &str) -> &'a [toml::Value] {

@@ -1,7 +1,11 @@
 //! Resilience, threads in shear and losses against worked examples and independent integration.
 
-use std::{f64::consts::PI, fs};
+#[path = "shared/data.rs"]
+mod data;
 
+use std::f64::consts::PI;
+
+use data::{data, float, number, numbers};
 use ringsum::{
     catalog::Thread,
     preload::{
@@ -46,33 +50,6 @@ fn thread(diameter: f64, pitch: f64, depths: [f64; 2], inch: bool) -> Thread {
     }
 }
 
-fn cases() -> toml::Table {
-    let path = concat!(env!("CARGO_MANIFEST_DIR"), "/tests/data/preload_cases.toml");
-    fs::read_to_string(path)
-        .expect("the data file is beside the tests")
-        .parse()
-        .expect("the data file is TOML")
-}
-
-fn float(value: &toml::Value) -> f64 {
-    value
-        .as_float()
-        .unwrap_or_else(|| value.as_integer().expect("a number") as f64)
-}
-
-fn number(row: &toml::Value, key: &str) -> f64 {
-    float(&row[key])
-}
-
-fn numbers(row: &toml::Value, key: &str) -> Vec<f64> {
-    row[key]
-        .as_array()
-        .expect("a list")
-        .iter()
-        .map(float)
-        .collect()
-}
-
 #[track_caller]
 fn assert_close(found: f64, expected: f64, tolerance: f64, what: &str) {
     let error = found / expected - 1.0;
@@ -86,7 +63,7 @@ fn assert_close(found: f64, expected: f64, tolerance: f64, what: &str) {
 
 #[test]
 fn frusta_of_shigley_8_22_and_8_24() {
-    let table = cases();
+    let table = data("preload_cases.toml");
     for row in table["frusta"].as_array().expect("a list") {
         let name = row["name"].as_str().expect("a name");
         // The form has no unit of its own: diameters and moduli as printed give stiffness as printed, with
@@ -136,7 +113,7 @@ fn frusta_of_shigley_8_22_and_8_24() {
 
 #[test]
 fn member_fit_of_wileman() {
-    let table = cases();
+    let table = data("preload_cases.toml");
     let row = &table["wileman"];
     let shape = MemberShape {
         diameter: number(row, "diameter"),
@@ -161,7 +138,7 @@ fn member_fit_of_wileman() {
 
 #[test]
 fn thread_shear_areas_of_fed_std_h28() {
-    let table = cases();
+    let table = data("preload_cases.toml");
     let row = &table["thread_shear"];
     let column = |key: &str| numbers(row, key);
     for (index, length) in column("length").into_iter().enumerate() {
@@ -188,7 +165,7 @@ fn thread_shear_areas_of_fed_std_h28() {
 
 #[test]
 fn inch_limits_follow_the_tolerance_formulas() {
-    let table = cases();
+    let table = data("preload_cases.toml");
     let row = &table["thread_shear"];
     for (index, diameter) in numbers(row, "length").into_iter().enumerate() {
         let limits = ThreadLimits::of(&unified(diameter, numbers(row, "per_inch")[index]));
@@ -243,7 +220,7 @@ fn integrated(body: &Clamped, tangent: f64) -> f64 {
 
 #[test]
 fn cone_closed_form_equals_the_integral() {
-    let table = cases();
+    let table = data("preload_cases.toml");
     for row in table["cone"].as_array().expect("a list") {
         let body = clamped(row);
         let tangent = body.cone_tangent();
@@ -265,7 +242,7 @@ fn cone_closed_form_equals_the_integral() {
 
 #[test]
 fn equal_layers_are_one_body() {
-    let table = cases();
+    let table = data("preload_cases.toml");
     for row in table["cone"].as_array().expect("a list") {
         let body = clamped(row);
         let layer = |share: f64, youngs_modulus: f64| StackLayer {
@@ -327,7 +304,7 @@ fn example_a() -> Compliance {
     ] {
         assert_close(found * 1e9, printed, 0.004, "part of the bolt");
     }
-    let body = clamped(&cases()["cone"][0]);
+    let body = clamped(&data("preload_cases.toml")["cone"][0]);
     Compliance {
         bolt: bolt.total(),
         plates: body.stretch(body.cone_tangent()) / 205e9,
@@ -355,7 +332,7 @@ fn example_b() -> Compliance {
             youngs_modulus: 70e9,
         },
     });
-    let body = clamped(&cases()["cone"][2]);
+    let body = clamped(&data("preload_cases.toml")["cone"][2]);
     Compliance {
         bolt: bolt.total(),
         plates: body.stretch(body.cone_tangent()) / 70e9,

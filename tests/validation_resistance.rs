@@ -1,7 +1,11 @@
 //! Pressure cone, ring sum and ring network against axisymmetric finite-element solutions.
 
+#[path = "shared/bessel.rs"]
+mod bessel;
+
 use std::{collections::BTreeMap, f64::consts::PI};
 
+use bessel::bessel;
 use ringsum::{
     joint::{ConeRule, ConeShape, Outline, Sink, Source, Zone},
     pressure::{Cone, Pair, cone},
@@ -302,20 +306,6 @@ fn uniform_conductance_between_isothermal_or_evenly_heated_faces_is_a_slab() {
         // Rounding of forty rings.
         assert!((found / exact - 1.0).abs() < 1e-12, "{ends:?}: {found}");
     }
-}
-
-/// Modified Bessel functions by quadrature of their integral forms.
-fn bessel(order: f64, x: f64) -> [f64; 2] {
-    const STEPS: u32 = 4000;
-    let mut sums = [0.0; 2];
-    for step in 0..STEPS {
-        let s = (f64::from(step) + 0.5) / f64::from(STEPS);
-        let angle = PI * s;
-        sums[0] += (x * angle.cos()).exp() * (order * angle).cos() / f64::from(STEPS);
-        let u = 12.0 * s;
-        sums[1] += (-x * u.cosh()).exp() * (order * u).cosh() * 12.0 / f64::from(STEPS);
-    }
-    sums
 }
 
 #[test]

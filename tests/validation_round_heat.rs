@@ -1,7 +1,11 @@
 //! Heat through two round plates against finite-element, series and closed-form solutions.
 
+#[path = "shared/bessel.rs"]
+mod bessel;
+
 use std::{collections::BTreeMap, f64::consts::PI};
 
+use bessel::bessel;
 use ringsum::{
     conductance::{Face, GapGas, Hardness, Interface, Local},
     joint,
@@ -392,20 +396,6 @@ fn heat_crosses_only_where_both_plates_are() {
     // Two grids of one problem.
     assert!((found - wanted).abs() < 5e-4, "{found} {wanted}");
     assert_eq!(heat.path.resistance_upper, None);
-}
-
-/// Modified Bessel functions by quadrature of their integral forms.
-fn bessel(order: f64, x: f64) -> [f64; 2] {
-    const STEPS: u32 = 4000;
-    let mut sums = [0.0; 2];
-    for step in 0..STEPS {
-        let s = (f64::from(step) + 0.5) / f64::from(STEPS);
-        let angle = PI * s;
-        sums[0] += (x * angle.cos()).exp() * (order * angle).cos() / f64::from(STEPS);
-        let u = 12.0 * s;
-        sums[1] += (-x * u.cosh()).exp() * (order * u).cosh() * 12.0 / f64::from(STEPS);
-    }
-    sums
 }
 
 // Thin plates are fins: θ = T1 − T2 obeys θ'' + θ'/r = m² θ, m² = 2/(k t (1/h + 2t/(3k))). What the

@@ -1,26 +1,21 @@
 //! Stacks of three plates: the composite wall, mirrored stacks, forces through every interface, a
 //! shim of next to no thickness, and what the plate between adds to the spread.
 
+#[path = "shared/joints.rs"]
+mod joints;
+
+use joints::{fast, read};
 use ringsum::{
-    estimate::{self, CaseResult, Chain, Choice, Fineness, Options, Realisation, Watch},
-    joint, uncertainty,
+    estimate::{self, CaseResult, Options, Realisation},
+    joint::Joint,
+    uncertainty,
 };
 
 /// Nominal results only.
 const NOMINAL: Options = Options { draws: 0, seed: 1 };
 
-/// A joint on a fast elastic field.
-fn chain(joint: &joint::Joint) -> Chain<'_> {
-    let choice = Choice::elastic(Fineness::Fast, 1_000_000_000);
-    Chain::of(joint, choice, &Watch::none()).expect("a stack has a field")
-}
-
-fn read(text: &str) -> joint::Joint {
-    joint::read(text).unwrap_or_else(|faults| panic!("{faults:#?}"))
-}
-
-fn case(joint: &joint::Joint) -> CaseResult {
-    let found = estimate::nominal(&chain(joint), &NOMINAL).expect("a stack has a number");
+fn case(joint: &Joint) -> CaseResult {
+    let found = estimate::nominal(&fast(joint), &NOMINAL).expect("a stack has a number");
     found.cases[0].clone()
 }
 
@@ -240,7 +235,7 @@ fn the_plate_between_is_in_the_spread() {
         draws: 256,
         seed: 1,
     };
-    let found = uncertainty::along(&chain(&joint), &options).expect("draws");
+    let found = uncertainty::along(&fast(&joint), &options).expect("draws");
     let case = &found.cases[0];
     let first = &case.drivers[0];
     assert_eq!(first.input, "conductivity of the plates between");
@@ -263,7 +258,7 @@ fn the_plate_between_is_in_the_spread() {
 fn scatter_of_one_interface_moves_its_own_share() {
     for (scatter, own) in [(["20 %", "0 %"], 0), (["0 %", "20 %"], 1)] {
         let joint = read(&walled(scatter));
-        let chain = chain(&joint);
+        let chain = fast(&joint);
         let at = Realisation {
             // One standard deviation: 2 Φ(1) − 1.
             filler: 0.682_689_492_137_085_9,

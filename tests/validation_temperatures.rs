@@ -2,10 +2,12 @@
 //!
 //! Balances and identities: no number here comes from outside.
 
+#[path = "shared/joints.rs"]
+mod joints;
+
+use joints::fast;
 use ringsum::{
-    estimate::{
-        Chain, Choice, Fineness, HeatMap, Realisation, StackSection, Watch, heat_map, stack_section,
-    },
+    estimate::{Chain, HeatMap, Realisation, StackSection, heat_map, stack_section},
     joint::{self, Joint},
     resistance::columns::Across,
 };
@@ -13,11 +15,6 @@ use ringsum::{
 fn joint(file: &str) -> Joint {
     let text = std::fs::read_to_string(format!("tests/data/joints/{file}.toml"));
     joint::read(&text.expect("the file is there")).expect("a good joint")
-}
-
-fn chain(joint: &Joint) -> Chain<'_> {
-    let choice = Choice::elastic(Fineness::Fast, 1_000_000_000);
-    Chain::of(joint, choice, &Watch::none()).expect("a field")
 }
 
 fn drawn(chain: &Chain) -> (HeatMap, StackSection) {
@@ -35,7 +32,7 @@ fn mean(values: impl Iterator<Item = f64>) -> f64 {
 fn the_faces_carry_the_drop_and_the_heat_of_the_solution() {
     for file in ["case_i", "round_single"] {
         let joint = joint(file);
-        let chain = chain(&joint);
+        let chain = fast(&joint);
         let path = chain
             .state(0, &Realisation::default())
             .expect("a state")
@@ -66,7 +63,7 @@ fn a_section_agrees_with_the_faces_and_stays_below_the_hottest_point() {
         ("round_single", 5e-3),
     ] {
         let joint = joint(file);
-        let chain = chain(&joint);
+        let chain = fast(&joint);
         let hottest = chain
             .temperatures(0)
             .expect("a state")

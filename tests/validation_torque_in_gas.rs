@@ -4,8 +4,12 @@
 //! sink at 0.25, 0.5, 1, 2 and 3 times 5 kN was computed for this project with an independent
 //! three-dimensional finite-element program.
 
+#[path = "shared/joints.rs"]
+mod joints;
+
+use joints::fast;
 use ringsum::{
-    estimate::{Chain, Choice, Fineness, Options, Realisation, TorqueSweep, Watch},
+    estimate::{Chain, Options, Realisation, TorqueSweep},
     joint::{self, Joint},
     uncertainty::{SweepOptions, sweep_along},
 };
@@ -54,14 +58,9 @@ fn joint(medium: &str) -> Joint {
     joint
 }
 
-fn chain(joint: &Joint) -> Chain<'_> {
-    let choice = Choice::elastic(Fineness::Fast, 1_000_000_000);
-    Chain::of(joint, choice, &Watch::none()).expect("a field")
-}
-
 fn resistances(medium: &str) -> Vec<f64> {
     let joint = joint(medium);
-    let chain = chain(&joint);
+    let chain = fast(&joint);
     let solved = FORCES.map(|force| {
         let torque = 5.0 * force;
         let there = chain.with_torque(0, torque).expect("a chain");
@@ -108,7 +107,7 @@ fn swept(medium: &str, [from, to]: [f64; 2]) -> TorqueSweep {
         confidence: 0.9,
         chain: Options { draws: 0, seed: 1 },
     };
-    sweep_along(&chain(&joint), &options).expect("a sweep")
+    sweep_along(&fast(&joint), &options).expect("a sweep")
 }
 
 #[test]
@@ -132,7 +131,7 @@ fn the_minimum_in_air_lies_between_swept_torques() {
     );
     // A finer look to both sides finds nothing lower, but for what the search leaves open.
     let joint = joint("air");
-    let chain = chain(&joint);
+    let chain = fast(&joint);
     for factor in [0.5, 0.8, 1.25, 2.0] {
         let there = chain
             .with_torque(0, factor * found.torque)

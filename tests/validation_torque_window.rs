@@ -1,5 +1,9 @@
 //! The ends of the torque window against a fine sweep of the same chain, on the closed-form field.
 
+#[path = "shared/joints.rs"]
+mod joints;
+
+use joints::{four_m4, read};
 use ringsum::{
     estimate::{Chain, Judged, Options, Range, Side, TorqueSweep, Trial},
     joint::{self, Joint},
@@ -10,39 +14,15 @@ use ringsum::{
 
 /// Four M4 in aluminium in vacuum, with a load along the bolts and a limit of the rise.
 fn text(rise: &str, load: &str) -> String {
-    format!(
-        r#"
-title = "Window"
-[service]
-medium = "vacuum"
-temperature = "20 °C"
-heat = "20 W"
-require = {{ rise = "{rise}" }}
-[[plate]]
-material = "Al 6061-T6"
-thickness = "5 mm"
-size = ["60 mm", "60 mm"]
-finish = "milled"
-[[plate]]
-material = "Al 6061-T6"
-thickness = "8 mm"
-size = ["60 mm", "60 mm"]
-finish = "milled"
-cooled = {{ face = "isothermal" }}
-[fastener]
-thread = "M4"
-grade = "A2-70"
-head = "socket"
-torque = "1.7 N·m"
-engagement = {{ kind = "tapped", length = "8 mm" }}
-axial_load = {{ value = "{load}", introduction = 0.5, lasting = false }}
-pattern = {{ kind = "grid", count = [2, 2], margin = "10 mm" }}
-"#
+    let fastener = format!(
+        "engagement = {{ kind = \"tapped\", length = \"8 mm\" }}\n\
+         axial_load = {{ value = \"{load}\", introduction = 0.5, lasting = false }}"
+    );
+    four_m4(
+        &format!("temperature = \"20 °C\"\nheat = \"20 W\"\nrequire = {{ rise = \"{rise}\" }}"),
+        "cooled = { face = \"isothermal\" }",
+        &fastener,
     )
-}
-
-fn read(text: &str) -> Joint {
-    joint::read(text).unwrap_or_else(|faults| panic!("{faults:#?}"))
 }
 
 fn joint(rise: &str, load: &str) -> Joint {

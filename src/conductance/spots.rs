@@ -76,20 +76,6 @@ pub fn harmonic_mean(values: [f64; 2]) -> f64 {
     2.0 / (values[0].recip() + values[1].recip())
 }
 
-/// Root-mean-square slope of a machined face from its roughness Rq, m.
-///
-/// ```text
-/// m = 0.125 (σ / 1 µm)^0.402
-/// ```
-///
-/// Valid: 0.216–9.6 µm (range from memory). Published rules differ by a factor 1.9 at 1.6 µm and
-/// 2.8 at 0.2 µm; take a factor 1.4 as one standard deviation.
-/// Source: a public reference note; the rule is Antonetti, White & Simons'.
-/// Checked: `slope_rule_gives_its_table`.
-pub fn slope_from_roughness(roughness: f64) -> f64 {
-    0.125 * (roughness * 1e6).powf(0.402)
-}
-
 /// Conductance on unloading from the highest pressure, as a multiple of that at the highest.
 ///
 /// ```text
@@ -128,15 +114,6 @@ mod tests {
             let plastic = Mode::plastic(1e9).reduced_conductance(share * 1e9);
             let law = PAIR.conductivity * PAIR.slope / PAIR.roughness * plastic;
             assert!((from_spots / law - 1.0).abs() < 1e-12, "{share}");
-        }
-    }
-
-    // Half a unit of the last digit of the table.
-    #[test]
-    fn slope_rule_gives_its_table() {
-        for (micrometres, wanted) in [(0.2, 0.065), (0.8, 0.114), (1.6, 0.151), (3.2, 0.200)] {
-            let found = slope_from_roughness(micrometres * 1e-6);
-            assert!((found - wanted).abs() < 6e-4, "{micrometres}: {found}");
         }
     }
 

@@ -96,7 +96,7 @@ impl Joint {
     /// | symbol | quantity | SI unit |
     /// |---|---|---|
     /// | `α` | linear expansion of the plate | 1/K |
-    /// | `k` | conductivity of the plate | W/(m K) |
+    /// | `k` | conductivity of the plate through its thickness | W/(m K) |
     /// | `q″` | heat flux through the thickness, positive from the first plate to the second | W/m² |
     /// | `t₁`, `t₂` | thickness of the plate and of the layer on its outer face | m |
     /// | `E₁`, `E₂` | Young's moduli of both | Pa |
@@ -113,13 +113,15 @@ impl Joint {
     /// Source: flux, uniform gradient in a free plate, by definition; bimetal, Timoshenko 1925,
     /// from memory.
     /// Checked: `heat_opens_the_first_plate_and_domes_the_second`,
+    /// `a_layered_plate_bends_by_what_it_conducts_through_its_thickness`,
     /// `a_bimetal_of_equal_layers_bends_by_the_textbook`.
     pub fn sag_curvature(&self, plate: usize) -> f64 {
         let own = &self.plates[plate];
         let down = if plate == 0 { 1.0 } else { -1.0 };
         let bent_by = |flux: f64| {
             let material = &own.material;
-            down * material.expansion.value * flux / material.conductivity.value
+            let through = material.conductivity.value * material.through_ratio();
+            down * material.expansion.value * flux / through
         };
         match &own.sag {
             None => 0.0,
@@ -218,6 +220,22 @@ mod tests {
         // The domed face touches in the middle and parts at the corners.
         assert!(near(joint.initial_gap(0, CENTRE), 0.0));
         assert!(near(joint.initial_gap(0, CORNER), height));
+    }
+
+    // The gradient of the flux lies along the thickness: 20 kW/m² over 2 W/(m K) are 10 K/mm,
+    // whatever the plate conducts in its plane. 1e-12 is rounding.
+    #[test]
+    fn a_layered_plate_bends_by_what_it_conducts_through_its_thickness() {
+        let text = fixture::TEXT.replacen(
+            "thickness = \"5 mm\"",
+            "thickness = \"5 mm\"\nsag = { flux = \"20 kW/m²\" }\n\
+             conductivity = { in_plane = \"200 W/(m·K)\", through = \"2 W/(m·K)\" }",
+            1,
+        );
+        let joint = crate::joint::read(&text).expect("a layered plate");
+        let expansion = joint.plates[0].material.expansion.value;
+        let found = joint.sag_curvature(0);
+        assert!((found / (expansion * 1e4) - 1.0).abs() < 1e-12, "{found}");
     }
 
     #[test]

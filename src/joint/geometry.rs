@@ -8,6 +8,7 @@ use crate::{
     numerics::polygon,
 };
 
+pub(super) use plates::distinct_heights;
 pub(super) use within::{holds_patch, holds_zone, overlap, swallowed};
 
 /// A point this near to an edge lies on it, m: coordinates of metres are rounded below it.

@@ -4,7 +4,7 @@ use std::f64::consts::PI;
 
 use crate::{
     catalog,
-    joint::{Engagement, Fastener, Isolating, Joint, Outline, Patch, Plate},
+    joint::{Engagement, Fastener, Isolating, Joint, Patch, Plate},
 };
 
 /// Threads that stand out of a nut, in pitches (common practice, no source).
@@ -143,16 +143,16 @@ impl Joint {
             .iter()
             .map(|fastener| fastener.places.len() as f64 * disc(fastener.hole_radius[index]))
             .sum();
-        let openings: f64 = plate.cutouts.iter().map(area).sum();
+        let openings: f64 = plate.cutouts.iter().map(Patch::area).sum();
         let ribs: f64 = plate
             .ribs
             .iter()
-            .map(|rib| rib.height * area(&rib.patch))
+            .map(|rib| rib.height * rib.patch.area())
             .sum();
         let feet = plate.feet.as_ref().map_or(0.0, |feet| {
-            feet.height * feet.at.iter().map(area).sum::<f64>()
+            feet.height * feet.at.iter().map(Patch::area).sum::<f64>()
         });
-        (outline(plate) - openings - holes) * plate.thickness + ribs + feet
+        (plate.outline.area() - openings - holes) * plate.thickness + ribs + feet
     }
 
     /// Mass of one bolt with all that belongs to it, kg; none without a density.
@@ -202,34 +202,6 @@ impl Joint {
 
 fn disc(radius: f64) -> f64 {
     PI * radius * radius
-}
-
-/// Area inside the outline of a plate, m².
-fn outline(plate: &Plate) -> f64 {
-    match &plate.outline {
-        Outline::Rectangle { size } => size[0] * size[1],
-        Outline::Disc { radius } => disc(*radius),
-        Outline::Polygon { points } => polygon(points),
-    }
-}
-
-fn area(patch: &Patch) -> f64 {
-    match patch {
-        Patch::Rectangle { size, .. } => size[0] * size[1],
-        Patch::Disc { radius, .. } => disc(*radius),
-        Patch::Polygon { points } => polygon(points),
-    }
-}
-
-/// Area of a simple polygon, by its corners.
-fn polygon(points: &[[f64; 2]]) -> f64 {
-    let next = points.iter().cycle().skip(1);
-    let twice: f64 = points
-        .iter()
-        .zip(next)
-        .map(|(a, b)| a[0] * b[1] - b[0] * a[1])
-        .sum();
-    0.5 * twice.abs()
 }
 
 #[cfg(test)]

@@ -7,7 +7,7 @@ use crate::{
     joint::{
         Feet, Outline, Patch, Rib,
         collector::{Collector, Wording, fault},
-        geometry::{holds_patch, swallowed},
+        geometry::{distinct_heights, holds_patch, swallowed},
         plates::two_ways,
         record::{Point, Record},
         tree::Span,
@@ -117,12 +117,7 @@ fn feet(plate: &Record, outline: Option<&Outline>, collector: &mut Collector) ->
 
 fn ribs(plate: &Record, outline: Option<&Outline>, collector: &mut Collector) -> Vec<(Rib, Span)> {
     let records = plate.records("ribs");
-    let mut heights: Vec<f64> = records
-        .iter()
-        .filter_map(|rib| rib.number("height"))
-        .collect();
-    heights.sort_by(f64::total_cmp);
-    heights.dedup_by(|next, height| *next - *height <= SAME_PLACE);
+    let heights = distinct_heights(records.iter().filter_map(|rib| rib.number("height")));
     collector.require(heights.len() <= MOST_HEIGHTS, || {
         fault(
             "plate/rib-heights",

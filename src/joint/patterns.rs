@@ -2,13 +2,16 @@
 
 use std::f64::consts::TAU;
 
-use crate::joint::{
-    MOST_PLACES, Outline,
-    collector::{Collector, Wording, fault},
-    plates::two_ways,
-    record::{Point, Record},
-    tree::Span,
-    walk::{missing, too_many},
+use crate::{
+    joint::{
+        MOST_PLACES, Outline,
+        collector::{Collector, Wording, fault},
+        plates::two_ways,
+        record::{Point, Record},
+        tree::Span,
+        walk::{missing, too_many},
+    },
+    units::{self, Quantity},
 };
 
 /// A place with the bytes that state it.
@@ -161,6 +164,11 @@ fn within_margin(
     }
     let margin = record.number("margin")?;
     let [low, high] = outline?.corners();
+    let crowded = (0..2).find(|axis| counts[*axis] > 1 && 2.0 * margin > high[*axis] - low[*axis]);
+    if let Some(axis) = crowded {
+        collector.report(no_room(record, margin, 0.5 * (high[axis] - low[axis])));
+        return None;
+    }
     let along = |axis: usize| {
         let (from, to) = (low[axis] + margin, high[axis] - margin);
         if counts[axis] == 1 {
@@ -171,6 +179,18 @@ fn within_margin(
     };
     let (across, up) = (along(0), along(1));
     Some(([across.0, up.0], [across.1, up.1]))
+}
+
+/// A margin that leaves nothing between it and that of the other side: bolts would change places.
+fn no_room(record: &Record, margin: f64, most: f64) -> crate::diagnostic::Fault {
+    let [margin, most] = [margin, most].map(|length| units::show(length, Quantity::Length));
+    fault(
+        "value/range",
+        &record.span("margin"),
+        format!("a margin of {margin} reaches past the middle of the first plate"),
+    )
+    .expecting(format!("at most {most}"))
+    .help("`margin` is the distance of the outer bolts from the edges of the first plate")
 }
 
 /// Bolts on a circle: of a diameter, or within a margin of a round plate's edge.
@@ -186,7 +206,14 @@ fn circle(
             return None;
         }
         (true, false, _) => record.number("diameter")? / 2.0,
-        (false, true, Some(Outline::Disc { radius })) => *radius - record.number("margin")?,
+        (false, true, Some(Outline::Disc { radius })) => {
+            let margin = record.number("margin")?;
+            if margin > *radius {
+                collector.report(no_room(record, margin, *radius));
+                return None;
+            }
+            *radius - margin
+        }
         (false, true, None) => return None,
         (false, _, _) => {
             collector.report(missing(record, "diameter", "diameter = \"50 mm\""));

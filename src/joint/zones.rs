@@ -137,7 +137,7 @@ fn above_zero(joint: &Joint, last: &Record, collector: &mut Collector) {
         Cooling::Parts(parts) => parts
             .iter()
             .map(|part| match part {
-                CooledPart::Film { zone, coefficient } => Some((*coefficient, area(*zone, face))),
+                CooledPart::Film { zone, coefficient } => Some((*coefficient, zone.area(face))),
                 _ => None,
             })
             .collect(),
@@ -174,12 +174,4 @@ fn above_zero(joint: &Joint, last: &Record, collector: &mut Collector) {
         .expecting("expected a better film, a larger back or less heat")
         .help("the temperature of the service is that of the sink surface; check the unit of `film`")
     });
-}
-
-fn area(zone: Zone, face: f64) -> f64 {
-    match zone {
-        Zone::Face => face,
-        Zone::Rectangle { size, .. } => size[0] * size[1],
-        Zone::Disc { radius, .. } => std::f64::consts::PI * radius * radius,
-    }
 }

@@ -1,5 +1,7 @@
 //! Symmetric positive definite band matrices: Cholesky factor and solution.
 
+use crate::numerics::inner;
+
 /// A symmetric band matrix; only the lower half is kept.
 ///
 /// Row `i` stores columns `i − w … i`, `w` the half-bandwidth, so that the inner products of the
@@ -95,12 +97,13 @@ impl BandedMatrix {
                 let length = column - first;
                 let above = &finished[column * stride..][self.half_bandwidth - length..];
                 let start = self.half_bandwidth - (row - first);
-                let overlap = dot(&current[start..start + length], &above[..length]);
+                let overlap =
+                    inner::product::<8>(&current[start..start + length], &above[..length]);
                 let place = self.half_bandwidth - (row - column);
                 current[place] = (current[place] - overlap) * inverse_diagonal[column];
             }
             let left = &current[self.half_bandwidth - (row - first)..self.half_bandwidth];
-            let pivot = current[self.half_bandwidth] - dot(left, left);
+            let pivot = current[self.half_bandwidth] - inner::product::<8>(left, left);
             if !(pivot > 0.0 && pivot.is_finite()) {
                 return Err(NotPositiveDefinite { row });
             }
@@ -138,7 +141,8 @@ impl Factor {
         for row in start..self.lower.order {
             let first = row.saturating_sub(width).max(start);
             let left = &self.lower.rows[row * stride + width - (row - first)..][..row - first];
-            rhs[row] = (rhs[row] - dot(left, &rhs[first..row])) * self.inverse_diagonal[row];
+            rhs[row] = (rhs[row] - inner::product::<8>(left, &rhs[first..row]))
+                * self.inverse_diagonal[row];
         }
     }
 
@@ -164,25 +168,6 @@ impl Factor {
     pub fn order(&self) -> usize {
         self.lower.order
     }
-}
-
-/// Inner product in eight running sums, which the processor can carry side by side.
-#[inline]
-fn dot(a: &[f64], b: &[f64]) -> f64 {
-    let mut sums = [0.0; 8];
-    let (a_blocks, b_blocks) = (a.chunks_exact(8), b.chunks_exact(8));
-    let rest: f64 = a_blocks
-        .remainder()
-        .iter()
-        .zip(b_blocks.remainder())
-        .map(|(x, y)| x * y)
-        .sum();
-    for (x, y) in a_blocks.zip(b_blocks) {
-        for (lane, sum) in sums.iter_mut().enumerate() {
-            *sum += x[lane] * y[lane];
-        }
-    }
-    sums.iter().sum::<f64>() + rest
 }
 
 #[cfg(test)]

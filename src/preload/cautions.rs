@@ -377,8 +377,12 @@ fn running(fastener: &Fastener, tightening: &TorqueTightening) -> Option<String>
         ));
     }
     if share > 0.25 {
+        let scatter = match tightening.running_spread {
+            Some(_) => "its stated scatter moves",
+            None => "its scatter, not counted here, moves",
+        };
         return Some(format!(
-            "the running torque takes {:.0} % of the torque; its scatter, not counted here, moves the force as much.",
+            "the running torque takes {:.0} % of the torque; {scatter} the force as much.",
             100.0 * share
         ));
     }

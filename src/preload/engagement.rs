@@ -97,14 +97,15 @@ impl ThreadLimits {
     /// Source: the form of FED-STD-H28.
     /// Checked: `thread_shear_areas_of_fed_std_h28`.
     pub fn shear_widths(&self) -> ShearWidths {
-        let (pitch, root3) = (self.pitch, FLANK);
+        // tan 30° = 1/√3: how fast a flank gains width.
+        let (pitch, flank) = (self.pitch, FLANK);
         ShearWidths {
             bolt: PI
                 * self.nut_minor_most
-                * (0.5 + root3 * (self.bolt_pitch_least - self.nut_minor_most) / pitch),
+                * (0.5 + flank * (self.bolt_pitch_least - self.nut_minor_most) / pitch),
             nut: PI
                 * self.bolt_major_least
-                * (0.5 + root3 * (self.bolt_major_least - self.nut_pitch_most) / pitch),
+                * (0.5 + flank * (self.bolt_major_least - self.nut_pitch_most) / pitch),
         }
     }
 }

@@ -66,7 +66,7 @@ pub fn von_mises(thread: &Thread, load: Load, rule: TorsionRule) -> f64 {
 /// ```
 ///
 /// `g` is the thread lever, m; `σ` the stress allowed, Pa; `A₀` the area at the stress diameter, m², and `W` its
-/// resistance to torsion, m³. Zero when the running torque alone exceeds it.
+/// resistance to torsion, m³. None when the running torque alone exceeds it.
 /// Valid: tightening alone, thread fully plastic in torsion.
 /// Source: VDI 2230-1, editions from 2001 on (see `law/strength-use`).
 pub fn force_at_stress(thread: &Thread, twist: Twist, stress: f64) -> Option<f64> {

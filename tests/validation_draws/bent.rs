@@ -3,11 +3,13 @@
 use std::fs;
 
 use ringsum::{
-    estimate::{Bend, Chain, Choice, Fineness, Met, Options, Realisation, Watch},
+    estimate::{Bend, Met, Options, Realisation},
     joint::{self, Joint, Limit},
     numerics::sampling::Sobol,
     uncertainty::{self, Answer},
 };
+
+use crate::joints::fast;
 
 /// A round joint whose plates bend so much that the ways differ, with a limit of its resistance.
 fn joint(limit: f64) -> Joint {
@@ -24,11 +26,6 @@ fn joint(limit: f64) -> Joint {
     joint::read_with(&text, &sets).expect("a good joint")
 }
 
-fn solved(joint: &Joint) -> Chain<'_> {
-    let choice = Choice::elastic(Fineness::Fast, 1_000_000_000);
-    Chain::of(joint, choice, &Watch::none()).expect("a field")
-}
-
 const OPTIONS: Options = Options {
     draws: 4096,
     seed: 1,
@@ -40,7 +37,7 @@ const OPTIONS: Options = Options {
 #[test]
 fn the_band_holds_its_share_whichever_way_faces_are_bent() {
     let joint = joint(1.0);
-    let chain = solved(&joint);
+    let chain = fast(&joint);
     let nominal = chain.state(0, &Realisation::default()).expect("a state");
     let nominal = nominal.path.source_to_sink;
     let draws = uncertainty::draws(&chain, (0, &[Answer::SourceToSink]), &OPTIONS).expect("draws");
@@ -91,7 +88,7 @@ fn the_band_holds_its_share_whichever_way_faces_are_bent() {
 fn a_requirement_is_held_against_the_worse_way() {
     let found = |limit: f64| {
         let joint = joint(limit);
-        let found = uncertainty::along(&solved(&joint), &OPTIONS).expect("a number");
+        let found = uncertainty::along(&fast(&joint), &OPTIONS).expect("a number");
         found.cases[0].clone()
     };
     let case = found(1.0);

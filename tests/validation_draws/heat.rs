@@ -2,9 +2,11 @@
 
 use ringsum::{
     estimate::{Chain, Met, Options, Realisation},
-    joint::{self, Joint, RequirementKind},
+    joint::{Joint, RequirementKind},
     uncertainty,
 };
+
+use crate::joints::{four_m4, read};
 
 const OPTIONS: Options = Options {
     draws: 4096,
@@ -13,32 +15,8 @@ const OPTIONS: Options = Options {
 
 /// Four M4 between plates of which the cold one is cooled as told.
 fn joint(heat: &str, cooled: &str, require: &str) -> Joint {
-    let text = format!(
-        r#"
-[service]
-medium = "vacuum"
-heat = "{heat}"
-require = {{ {require} }}
-[[plate]]
-material = "Al 6061-T6"
-thickness = "5 mm"
-size = ["60 mm", "60 mm"]
-finish = "milled"
-[[plate]]
-material = "Al 6061-T6"
-thickness = "8 mm"
-size = ["60 mm", "60 mm"]
-finish = "milled"
-{cooled}
-[fastener]
-thread = "M4"
-grade = "A2-70"
-head = "socket"
-torque = "1.7 N·m"
-pattern = {{ kind = "grid", count = [2, 2], margin = "10 mm" }}
-"#
-    );
-    joint::read(&text).unwrap_or_else(|faults| panic!("{faults:#?}"))
+    let service = format!("heat = \"{heat}\"\nrequire = {{ {require} }}");
+    read(&four_m4(&service, cooled, ""))
 }
 
 const FILM: &str = r#"cooled = { film = "500 W/(m²·K)" }"#;

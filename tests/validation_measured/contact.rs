@@ -3,10 +3,13 @@
 
 use std::f64::consts::PI;
 
-use ringsum::estimate::{CaseResult, Chain, Choice, Fineness, Realisation, Watch};
+use ringsum::estimate::{CaseResult, Realisation};
 use toml::{Table, Value};
 
-use crate::{MEMORY, read, solved};
+use crate::{
+    joints::{fast, read, read_with},
+    solved,
+};
 
 /// Bearing radius of all of these joints, m.
 const BEARING: f64 = 5e-3;
@@ -30,7 +33,7 @@ fn text(hole: f64, thickness: f64, width: f64) -> String {
 }
 
 fn result(hole: f64, thickness: f64) -> CaseResult {
-    solved(&read(&text(hole, thickness, 6.0 + 2.0 * thickness), &[]), 0)
+    solved(&read(&text(hole, thickness, 6.0 + 2.0 * thickness)), 0)
 }
 
 #[test]
@@ -60,9 +63,8 @@ fn contact_of_equal_plates_is_that_of_finite_elements() {
             continue;
         }
         run += 1;
-        let joint = read(&text(hole, thickness, 6.0 + 2.0 * thickness), &[]);
-        let choice = Choice::elastic(Fineness::Fast, MEMORY);
-        let chain = Chain::of(&joint, choice, &Watch::none()).expect("a field");
+        let joint = read(&text(hole, thickness, 6.0 + 2.0 * thickness));
+        let chain = fast(&joint);
         let state = chain.state(0, &Realisation::default()).expect("a state");
         let found = chain.bolts(0, &state)[0].contact_radius / BEARING;
         let off = found / radius - 1.0;
@@ -88,11 +90,11 @@ fn contact_spreads_as_it_was_measured() {
     assert!(radius(&thick) > 1.1 * radius(&thin), "thickness");
     // The same plates under a wider head.
     let plates = text(0.6, 0.8, 8.0);
-    let wide = solved(&read(&plates, &["fastener.bearing=\"13 mm\""]), 0);
-    let narrow = solved(&read(&plates, &[]), 0);
+    let wide = solved(&read_with(&plates, &["fastener.bearing=\"13 mm\""]), 0);
+    let narrow = solved(&read(&plates), 0);
     assert!(radius(&wide) > 1.1 * radius(&narrow), "bearing");
     // Twice the load: the same contact, twice the pressure.
-    let twice = solved(&read(&plates, &["fastener.preload=\"6000 N\""]), 0);
+    let twice = solved(&read_with(&plates, &["fastener.preload=\"6000 N\""]), 0);
     assert!(
         (radius(&twice) / radius(&narrow) - 1.0).abs() < 1e-9,
         "load"
@@ -100,12 +102,11 @@ fn contact_spreads_as_it_was_measured() {
     let peak = twice.pressure.peak / narrow.pressure.peak;
     assert!((peak - 2.0).abs() < 1e-9, "pressure goes with load: {peak}");
     // Plates as thick as the bolt: contact ends within three of its diameters.
-    let as_thick = solved(&read(&text(0.45, 0.8, 8.0), &[]), 0);
+    let as_thick = solved(&read(&text(0.45, 0.8, 8.0)), 0);
     assert!(radius(&as_thick) < 3.0 * 4e-3, "{}", radius(&as_thick));
     // The pressure is highest at the hole and falls to nothing.
-    let joint = read(&plates, &[]);
-    let choice = Choice::elastic(Fineness::Fast, MEMORY);
-    let chain = Chain::of(&joint, choice, &Watch::none()).expect("a field");
+    let joint = read(&plates);
+    let chain = fast(&joint);
     let state = chain.state(0, &Realisation::default()).expect("a state");
     let end = radius(&narrow);
     let along: Vec<f64> = (0..=20)

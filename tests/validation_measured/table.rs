@@ -6,7 +6,7 @@ use ringsum::{estimate::Band, joint::Joint};
 use serde_json::{Value, json};
 use toml::Table;
 
-use crate::{evidence, path, read, solved};
+use crate::{evidence, joints::read, path, solved};
 
 /// Draws of the bands; they are told, not judged.
 const DRAWS: u32 = 64;
@@ -153,7 +153,7 @@ fn added(file: &str, draws: u32) -> Band {
 fn measured_joint(file: &str) -> Joint {
     let name = format!("tests/data/joints/measured/{file}.toml");
     let text = std::fs::read_to_string(name).expect("the file is there");
-    read(&text, &[])
+    read(&text)
 }
 
 /// A greased module or seat with its band of acceptance.

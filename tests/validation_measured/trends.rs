@@ -5,7 +5,7 @@
 //! Assumed: height of 50 mm, where the bolts stand, roughness, medium (both are run), lubrication, thread
 //! engagement. The abstract gives directions, so directions are asserted, with ratios where a word has one.
 
-use crate::{path, read};
+use crate::{joints::read_with, path};
 
 const BLOCKS: &str = include_str!("../data/joints/bolted_blocks.toml");
 
@@ -14,7 +14,7 @@ const EIGHT: &str = "fastener.pattern={ kind = \"edge\", count = [3, 3], margin 
 
 /// What the joint conducts over what it adds, W/K.
 fn conductance(sets: &[&str]) -> f64 {
-    path(&read(BLOCKS, sets)).added_by_joint.recip()
+    path(&read_with(BLOCKS, sets)).added_by_joint.recip()
 }
 
 #[test]

@@ -220,7 +220,7 @@ impl DrawPlan<'_> {
 
 impl DrawPlan<'_> {
     /// What a draw is read from on a solved field, as data: for programs that evaluate the same
-    /// draws; nothing for the cone. What stated values do that make another joint is not in it.
+    /// draws; nothing for the cone. Out-of-flatness, and what stated values do, are not in it.
     pub fn tables(&self) -> Value {
         match &self.field {
             Field::Cone => Value::Null,

@@ -86,7 +86,7 @@ impl ElasticModel {
         (fineness, memory): (Fineness, u64),
         watch: &Watch,
     ) -> Result<Self, Failure> {
-        let solver: Arc<dyn Solver> = match Round::of(joint) {
+        let solver: Arc<dyn Solver> = match Round::of(joint, memory, watch) {
             Some(round) => Arc::new(round),
             None => Arc::new(Columns::new(joint, memory, watch)?),
         };

@@ -156,6 +156,15 @@ impl From<Sink> for Cooling {
 }
 
 impl Zone {
+    /// Its area, m², on a face of so much, m².
+    pub fn area(self, face: f64) -> f64 {
+        match self {
+            Self::Face => face,
+            Self::Rectangle { size, .. } => size[0] * size[1],
+            Self::Disc { radius, .. } => std::f64::consts::PI * radius * radius,
+        }
+    }
+
     /// The same zone of a plate whose origin lies there, in joint coordinates.
     #[must_use]
     pub fn moved(self, [x, y]: [f64; 2]) -> Self {

@@ -1,7 +1,7 @@
 //! Values that the file states with a spread of their own, and how bolts scatter together.
 
 use crate::joint::{
-    Bounds, CooledPart, Cooling, Engagement, Facing, FillerKind, Joint, Medium, Sink, Zone,
+    Bounds, CooledPart, Cooling, Engagement, Facing, FillerKind, Joint, Medium, Sink,
 };
 
 /// Lengths nearer to each other than this are one, relative.
@@ -269,7 +269,7 @@ impl Joint {
                 .iter()
                 .filter_map(|part| match part {
                     CooledPart::Film { zone, coefficient } => {
-                        Some((*coefficient, self.cooled_area(*zone)))
+                        Some((*coefficient, zone.area(self.cold().outline.area())))
                     }
                     _ => None,
                 })
@@ -282,14 +282,6 @@ impl Joint {
             there += drawn.unwrap_or(coefficient) * area;
         }
         if there > 0.0 { nominal / there } else { 1.0 }
-    }
-
-    fn cooled_area(&self, zone: Zone) -> f64 {
-        match zone {
-            Zone::Face => self.cold().outline.area(),
-            Zone::Rectangle { size, .. } => size[0] * size[1],
-            Zone::Disc { radius, .. } => std::f64::consts::PI * radius * radius,
-        }
     }
 
     /// Whether heat or films are stated with a spread, so that temperatures scatter by themselves.

@@ -7,6 +7,10 @@ use crate::{
 
 /// Straight edges nearer to each other than this are one, m.
 const SAME_STOP: f64 = 1e-9;
+/// Heights of ribs nearer to each other than this are one, m: 7 mm and 0.7 cm differ in their last digit.
+/// A micrometre of a rib moves nothing that is printed, and layers far thinner have no stiffness that
+/// solvers can tell.
+const SAME_HEIGHT: f64 = 1e-6;
 
 impl Plate {
     /// How deep a point of the joint lies inside the outline of this plate, m: negative outside.
@@ -48,6 +52,13 @@ impl Plate {
         self.thickness + here.map(|rib| rib.height).fold(0.0, f64::max)
     }
 
+    /// Heights of its ribs, m, rising, each once.
+    ///
+    /// Checked: `a_height_in_two_units_is_one_height`.
+    pub fn rib_heights(&self) -> Vec<f64> {
+        distinct_heights(self.ribs.iter().map(|rib| rib.height))
+    }
+
     /// Left, lower, right and upper bound in joint coordinates, m.
     pub fn bounds(&self) -> [f64; 4] {
         let [left, lower, right, upper] = self.outline.bounds();
@@ -76,6 +87,14 @@ impl Plate {
         stops.dedup_by(|next, stop| *next - *stop <= SAME_STOP);
         stops
     }
+}
+
+/// Heights, rising, each once.
+pub(in crate::joint) fn distinct_heights(heights: impl Iterator<Item = f64>) -> Vec<f64> {
+    let mut heights: Vec<f64> = heights.collect();
+    heights.sort_by(f64::total_cmp);
+    heights.dedup_by(|next, height| *next - *height <= SAME_HEIGHT);
+    heights
 }
 
 #[cfg(test)]
@@ -140,6 +159,20 @@ mod tests {
             ..plate
         };
         assert!(without.stands_at([50e-3, 25e-3]));
+    }
+
+    #[test]
+    fn a_height_in_two_units_is_one_height() {
+        let mut plate = plate();
+        let with = |height: f64| Rib {
+            height,
+            ..plate.ribs[0].clone()
+        };
+        // As 7 mm and 0.7 cm are read: their last digits differ.
+        let [one, other] = [7.0 * 1e-3, 0.7 * 1e-2];
+        assert!(one > other);
+        plate.ribs = vec![with(one), with(other), with(3e-3), with(7.01e-3)];
+        assert_eq!(plate.rib_heights(), [3e-3, other, 7.01e-3]);
     }
 
     #[test]

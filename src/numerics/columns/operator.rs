@@ -2,10 +2,13 @@
 
 use rayon::prelude::*;
 
-use crate::numerics::columns::{
-    Element, Form, LANES, Matrix, Neighbour, Plan,
-    kernel::{Coupling, Slab, turned},
-    stencil::{coefficients, with_floor},
+use crate::numerics::{
+    columns::{
+        Element, Form, LANES, Matrix, Neighbour, Plan,
+        kernel::{Coupling, Slab, turned},
+        stencil::{coefficients, with_floor},
+    },
+    inner,
 };
 
 /// A bonded layer of a body.
@@ -228,26 +231,8 @@ impl<F: Form> Operator<F> {
             .par_chunks(length)
             .zip(b.par_chunks(length))
             .with_min_len(8)
-            .map(|(a, b)| row_dot(a, b))
+            .map(|(a, b)| inner::product::<4>(a, b))
             .collect();
         rows.iter().sum()
     }
-}
-
-/// Inner product in four running sums, which the processor can carry side by side.
-fn row_dot(a: &[f64], b: &[f64]) -> f64 {
-    let (a_blocks, b_blocks) = (a.chunks_exact(4), b.chunks_exact(4));
-    let rest: f64 = a_blocks
-        .remainder()
-        .iter()
-        .zip(b_blocks.remainder())
-        .map(|(x, y)| x * y)
-        .sum();
-    let mut sums = [0.0; 4];
-    for (x, y) in a_blocks.zip(b_blocks) {
-        for (lane, sum) in sums.iter_mut().enumerate() {
-            *sum += x[lane] * y[lane];
-        }
-    }
-    sums.iter().sum::<f64>() + rest
 }

@@ -5,6 +5,7 @@ use nalgebra::DMatrix;
 use crate::numerics::{
     banded::NotPositiveDefinite,
     columns::{Form, Matrix},
+    inner,
 };
 
 /// Columns eliminated before the rest of a block is updated in one matrix product.
@@ -158,7 +159,7 @@ impl<F: Form> Coarsest<F> {
             for (at, column) in factor.column_iter().enumerate().rev() {
                 let column = &column.as_slice()[at..];
                 let (solved, rest) = part[at..].split_first_mut().expect("rows below");
-                *solved = (*solved - dot(rest, &column[1..])) / column[0];
+                *solved = (*solved - inner::product::<4>(rest, &column[1..])) / column[0];
             }
         }
         self.copy(values, &mut ordered, |value, own| {
@@ -184,23 +185,6 @@ impl<F: Form> Coarsest<F> {
             }
         }
     }
-}
-
-fn dot(a: &[f64], b: &[f64]) -> f64 {
-    let (a_blocks, b_blocks) = (a.chunks_exact(4), b.chunks_exact(4));
-    let rest: f64 = a_blocks
-        .remainder()
-        .iter()
-        .zip(b_blocks.remainder())
-        .map(|(x, y)| x * y)
-        .sum();
-    let mut sums = [0.0; 4];
-    for (x, y) in a_blocks.zip(b_blocks) {
-        for (lane, sum) in sums.iter_mut().enumerate() {
-            *sum += x[lane] * y[lane];
-        }
-    }
-    sums.iter().sum::<f64>() + rest
 }
 
 /// Turns the columns of a block into columns of L; `Err` names a bad pivot.

@@ -147,6 +147,29 @@ fn running_torque_that_eats_the_torque_is_named() {
 }
 
 #[test]
+fn a_stated_scatter_of_the_running_torque_is_not_said_to_be_missing() {
+    let told = |spread: Option<Bounds>| {
+        let bolt = m6_with(|t| {
+            t.running = 2.0;
+            t.running_spread = spread;
+            t.running_stated = true;
+        });
+        let found = group_cautions(&Group {
+            name: "M6",
+            fastener: &bolt,
+            supports: &supports(),
+        });
+        let told = found
+            .into_iter()
+            .find(|told| told.code == "preload/running-torque");
+        told.expect("a large running torque is told").text
+    };
+    assert!(told(None).contains("not counted"));
+    let counted = told(Some(Bounds::uniform([1.5, 2.0, 2.5])));
+    assert!(!counted.contains("not counted"), "{counted}");
+}
+
+#[test]
 fn wild_scatter_is_named() {
     expect(
         &m6_with(|t| t.scatter = Some(0.6)),

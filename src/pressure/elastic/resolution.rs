@@ -187,6 +187,9 @@ pub(super) fn loose(problem: &Problem) -> usize {
 }
 
 /// Columns, unknowns and memory on a plan.
+///
+/// Counted for the whole even where a mirror leaves a part: forces of other draws and of lost bolts need
+/// not mirror, and must find their room too.
 pub(super) fn size(problem: &Problem, plan: &Plan) -> Size {
     // Bytes of one column, from what is kept of it: stencils in double precision and, with the
     // coarser levels' third, in single; inverse blocks; vectors; masks.

@@ -86,6 +86,27 @@ pub struct Meeting {
     pub weights: Vec<f64>,
 }
 
+impl Meeting {
+    /// Where two bodies of a mesh touch, and where they face each other beside feet.
+    pub fn of(mesh: &Mesh, interface: usize) -> Vec<Self> {
+        let face = &mesh.faces[interface];
+        let [upper, lower] = [&mesh.bodies[interface], &mesh.bodies[interface + 1]];
+        let mut parts = vec![Self {
+            upper: 0,
+            lower: lower.nodes - 1,
+            weights: face.weight.clone(),
+        }];
+        if face.open_weight.iter().any(|weight| *weight > 0.0) {
+            parts.push(Self {
+                upper: upper.main_layer().first_node,
+                lower: lower.main_layer().last_node(),
+                weights: face.open_weight.clone(),
+            });
+        }
+        parts
+    }
+}
+
 /// Bodies on one plan, from the warm side down.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Stack {
@@ -258,21 +279,8 @@ impl Stack {
             })
             .collect();
         let mut stack = Self::new(mesh.plan.clone(), bodies)?;
-        for (interface, face) in mesh.faces.iter().enumerate() {
-            let [upper, lower] = [interface, interface + 1].map(|body| &mesh.bodies[body]);
-            let mut parts = vec![Meeting {
-                upper: 0,
-                lower: lower.nodes - 1,
-                weights: face.weight.clone(),
-            }];
-            if face.open_weight.iter().any(|weight| *weight > 0.0) {
-                parts.push(Meeting {
-                    upper: upper.main_layer().first_node,
-                    lower: lower.main_layer().last_node(),
-                    weights: face.open_weight.clone(),
-                });
-            }
-            stack = stack.meeting(interface, parts)?;
+        for interface in 0..mesh.faces.len() {
+            stack = stack.meeting(interface, Meeting::of(mesh, interface))?;
         }
         Ok(stack)
     }

@@ -39,6 +39,9 @@ const FORMS: [Variant; 2] = [Variant::OtherHeads, Variant::OtherFriction];
 #[derive(Debug)]
 pub(super) struct Round {
     shape: Shape,
+    /// What the columns may take where a variation is round no more, bytes.
+    most_bytes: u64,
+    watch: Watch,
     /// Contacts per unit of force: they serve any torque.
     contacts: Mutex<Vec<(round::Problem, Arc<Solution>)>>,
     /// Plates condensed to their faces: they serve any torque and medium.
@@ -59,9 +62,14 @@ struct InRound {
 
 impl Round {
     /// The pair of a joint; none where the joint is not round in every respect.
-    pub(super) fn of(joint: &Joint) -> Option<Self> {
+    ///
+    /// Its few thousand unknowns take less memory than the program itself at any resolution, so that no
+    /// limit is asked of them: the bytes are for the columns of a variation that is round no more.
+    pub(super) fn of(joint: &Joint, most_bytes: u64, watch: &Watch) -> Option<Self> {
         Some(Self {
             shape: Shape::of(joint)?,
+            most_bytes,
+            watch: watch.clone(),
             contacts: Mutex::new(Vec::new()),
             plates: Mutex::new(Vec::new()),
         })
@@ -117,11 +125,13 @@ impl Solver for Round {
     /// Contacts and plates are kept under their problems: all that is known goes along.
     fn remade(&self, joint: &Joint, _: bool) -> Result<Arc<dyn Solver>, Failure> {
         let Some(shape) = Shape::of(joint) else {
-            let columns = Columns::new(joint, u64::MAX, &Watch::none())?;
+            let columns = Columns::new(joint, self.most_bytes, &self.watch)?;
             return Ok(Arc::new(columns));
         };
         Ok(Arc::new(Self {
             shape,
+            most_bytes: self.most_bytes,
+            watch: self.watch.clone(),
             contacts: Mutex::new(known(&self.contacts)),
             plates: Mutex::new(known(&self.plates)),
         }))

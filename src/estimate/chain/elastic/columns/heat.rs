@@ -45,7 +45,7 @@ impl Plates {
     ) -> Result<Self, resistance::Failure> {
         let mut bodies: Vec<Body> = mesh.bodies.iter().map(body).collect();
         let mut faces: Vec<Vec<Meeting>> = (0..mesh.faces.len())
-            .map(|face| meeting(mesh, face))
+            .map(|interface| Meeting::of(mesh, interface))
             .collect();
         if order == Order::Reversed {
             let nodes: Vec<usize> = bodies.iter().map(Body::nodes).collect();
@@ -242,23 +242,4 @@ fn body(body: &crate::pressure::elastic::MeshBody) -> Body {
             })
             .collect(),
     }
-}
-
-/// Where two bodies touch, and where they face each other beside feet.
-fn meeting(mesh: &Mesh, interface: usize) -> Vec<Meeting> {
-    let face = &mesh.faces[interface];
-    let [upper, lower] = [&mesh.bodies[interface], &mesh.bodies[interface + 1]];
-    let mut parts = vec![Meeting {
-        upper: 0,
-        lower: lower.nodes - 1,
-        weights: face.weight.clone(),
-    }];
-    if face.open_weight.iter().any(|weight| *weight > 0.0) {
-        parts.push(Meeting {
-            upper: upper.main_layer().first_node,
-            lower: lower.main_layer().last_node(),
-            weights: face.open_weight.clone(),
-        });
-    }
-    parts
 }

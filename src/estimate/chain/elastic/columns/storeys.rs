@@ -94,11 +94,9 @@ fn stiffness(plate: &Plate) -> [f64; 2] {
 
 /// Ribs as layers, from the outer face outwards: each as thick as the step to the next height.
 fn ribs(plate: &Plate) -> Vec<Storey<'_>> {
-    let mut heights: Vec<f64> = plate.ribs.iter().map(|rib| rib.height).collect();
-    heights.sort_by(f64::total_cmp);
-    heights.dedup();
     let mut below = 0.0;
-    heights
+    plate
+        .rib_heights()
         .into_iter()
         .map(|height| {
             let thickness = height - below;
