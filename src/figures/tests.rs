@@ -87,7 +87,6 @@ fn plan(window: [f64; 2], factor: f64, scale: Scale, bolts: usize) -> PlanMap {
         unit: "MPa".into(),
         factor: 1.0,
         peak: None,
-        peak: None,
         scale,
         ramp: Ramp::Sea,
         outlines: vec![PlanOutline {

@@ -76,10 +76,12 @@ pub(super) fn draw(sweep: &TorqueSweep, setting: Setting) -> Result<Sheet, Figur
     let right = width - margin - beside;
     let across = |torque: f64| left + x_axis.place(lever.of(torque)) * (right - left);
 
+    let high = required.is_some_and(|(limit, _)| upper_axis.place(limit) > 0.85);
     let flags = Flags::arranged(
         torque_flags(sweep, (&x_axis, lever, setting.width), &across)?,
-        // Not over the numbers of the upright axis, whose topmost stands as high as a label.
-        [left, width - margin],
+        // Not over the numbers of the upright axis, whose topmost stands as high as a label, nor
+        // over the note of a requirement that lies as high.
+        [left, if high { right } else { width - margin }],
     );
     let mut sheet = Sheet::new(width);
     let subtitle = format!(

@@ -94,7 +94,9 @@ fn ticks(document: &str, title: &str) -> Vec<[f64; 2]> {
         .filter_map(|(at, _, text)| Some((*at, value(text)?)))
         .collect();
     let nearest = ticks.iter().map(|(at, _)| at[1]).fold(0.0, f64::max);
-    let row = ticks.iter().filter(|(at, _)| at[1] == nearest);
+    let row = ticks
+        .iter()
+        .filter(|(at, _)| (at[1] - nearest).abs() < 1e-9);
     row.map(|(at, value)| [*value, at[0]]).collect()
 }
 
@@ -109,7 +111,7 @@ fn circles(document: &str, radius: f64) -> Vec<f64> {
     let circles = document.split("<circle").skip(1);
     let circles = circles.map(|piece| piece.split('>').next().expect("a tag ends"));
     circles
-        .filter(|tag| number(tag, "r") == radius)
+        .filter(|tag| (number(tag, "r") - radius).abs() < 1e-9)
         .map(|tag| number(tag, "cx"))
         .collect()
 }
