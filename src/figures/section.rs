@@ -88,7 +88,7 @@ pub(super) fn draw(plot: &SectionPlot, setting: Setting) -> Result<Sheet, Figure
     // Labels of the uprights are as wide at every height that a cut is drawn.
     let widest = match setting.width {
         Width::Full => WIDE,
-        Width::Narrow => NARROW_SHEET - 2.0 * margin - axis::side_room(&upright, LEAST) - 10.0,
+        Width::Narrow => NARROW_SHEET - 2.0 * margin - axis::side_room(&upright, LEAST) - 24.0,
     };
     let (width, tall, stretch) = scaled(along, heights[1] - heights[0], widest);
     let left = margin + axis::side_room(&upright, tall);

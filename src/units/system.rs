@@ -406,7 +406,7 @@ mod tests {
             ("sink at 20.0 °C", "sink at 68.0 °F"),
             ("sink at −20.0 °C", "sink at −4.0 °F"),
             ("a face at −25.40 mm", "a face at −1.000 in"),
-            ("sink at −40 °C", "sink at -40 °F"),
+            ("sink at −40 °C", "sink at −40 °F"),
             ("line ends 25.4\n  mm of", "line ends 1.00\n  in of"),
         ] {
             assert_eq!(System::Inch.restated(metric), inch);
