@@ -17,6 +17,7 @@ mod picture;
 mod plan;
 mod ramp;
 mod section;
+mod setting;
 mod sheet;
 mod tornado;
 mod torque;
@@ -34,7 +35,9 @@ pub use plan::{
 pub use ramp::Ramp;
 pub use section::SectionPlot;
 
-use crate::{estimate::TorqueSweep, uncertainty::Ranking};
+use setting::{Setting, Width};
+
+use crate::{estimate::TorqueSweep, uncertainty::Ranking, units::System};
 
 /// The file a drawing becomes.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -93,37 +96,62 @@ pub enum FigureError {
     Output(String),
 }
 
-/// The drawing as a file of the format, ready to be saved.
+/// The drawing as a file of the format in SI, ready to be saved.
 pub fn render(drawing: &Drawing, format: Format) -> Result<Vec<u8>, FigureError> {
+    render_in(drawing, format, System::Si)
+}
+
+/// The drawing as a file of the format in a system of units.
+///
+/// Ranges are told in the units of the system before ticks are chosen, so that these are round in
+/// it. The drawing of the evidence stays in the units of its sources.
+pub fn render_in(drawing: &Drawing, format: Format, units: System) -> Result<Vec<u8>, FigureError> {
     match format {
-        Format::Svg => svg(drawing).map(String::into_bytes),
-        Format::Png => png(drawing),
+        Format::Svg => svg_in(drawing, units).map(String::into_bytes),
+        Format::Png => output::png(&sheet(drawing, full(units))?),
     }
 }
 
 /// The drawing as one `<svg>` element without prolog: a file of its own or part of a page.
 pub fn svg(drawing: &Drawing) -> Result<String, FigureError> {
-    output::svg(&sheet(drawing)?)
+    svg_in(drawing, System::Si)
+}
+
+/// The drawing as one `<svg>` element in a system of units.
+pub fn svg_in(drawing: &Drawing, units: System) -> Result<String, FigureError> {
+    output::svg(&sheet(drawing, full(units))?)
+}
+
+/// The drawing as one `<svg>` element that a narrow screen shows with letters of the same size; of a
+/// drawing that no page holds as wide as any.
+pub fn narrow_svg_in(drawing: &Drawing, units: System) -> Result<String, FigureError> {
+    let width = Width::Narrow;
+    output::svg(&sheet(drawing, Setting { units, width })?)
 }
 
 /// The drawing as PNG, two pixels to the nominal one.
 pub fn png(drawing: &Drawing) -> Result<Vec<u8>, FigureError> {
-    output::png(&sheet(drawing)?)
+    output::png(&sheet(drawing, full(System::Si))?)
 }
 
-fn sheet(drawing: &Drawing) -> Result<sheet::Sheet, FigureError> {
+fn full(units: System) -> Setting {
+    let width = Width::Full;
+    Setting { units, width }
+}
+
+fn sheet(drawing: &Drawing, setting: Setting) -> Result<sheet::Sheet, FigureError> {
     match drawing {
-        Drawing::Joint(plot) => joint::draw(plot),
-        Drawing::Plan(map) => plan::draw(map),
-        Drawing::PressureAndGap(pair) => plan::draw_pair(pair),
-        Drawing::Faces(pair) => plan::draw_faces(pair),
-        Drawing::Section(plot) => section::draw(plot),
-        Drawing::Cumulative(plot) => cumulative::draw(plot),
-        Drawing::Torque(sweep) => torque::draw(sweep),
-        Drawing::Arrange(plot) => arrange::draw(plot),
-        Drawing::Comparison(plot) => comparison::draw(plot),
-        Drawing::Tornado(ranking) => tornado::draw(ranking),
-        Drawing::Fit(plot) => fit::draw(plot),
+        Drawing::Joint(plot) => joint::draw(plot, setting),
+        Drawing::Plan(map) => plan::draw(map, setting),
+        Drawing::PressureAndGap(pair) => plan::draw_pair(pair, setting),
+        Drawing::Faces(pair) => plan::draw_faces(pair, setting),
+        Drawing::Section(plot) => section::draw(plot, setting),
+        Drawing::Cumulative(plot) => cumulative::draw(plot, setting),
+        Drawing::Torque(sweep) => torque::draw(sweep, setting),
+        Drawing::Arrange(plot) => arrange::draw(plot, setting.units),
+        Drawing::Comparison(plot) => comparison::draw(plot, setting),
+        Drawing::Tornado(ranking) => tornado::draw(ranking, setting.width),
+        Drawing::Fit(plot) => fit::draw(plot, setting.units),
         Drawing::Profile(plot) => fit::draw_profile(plot),
         Drawing::Evidence(plot) => evidence::draw(plot),
     }

@@ -10,6 +10,8 @@ mod heat;
 mod joint;
 #[path = "figures/tornado.rs"]
 mod tornado;
+#[path = "figures/units.rs"]
+mod units;
 
 use std::fmt::Write;
 
@@ -348,7 +350,7 @@ fn a_pressure_map_is_complete() {
 #[test]
 fn a_conductance_map_names_its_unit_and_decades() {
     let texts = texts(&svg(&every_drawing()[1]).unwrap());
-    assert!(holds(&texts, "local conductance, W/(m²\u{a0}K)"));
+    assert!(holds(&texts, "local conductance, W/(m²·K)"));
     assert!(holds(&texts, "10\u{2009}000") && holds(&texts, "1000"));
     // The field holds zeros, which no logarithmic bar can show.
     assert!(holds(&texts, "below"));
@@ -458,10 +460,10 @@ fn a_sweep_shows_stated_largest_best_and_required() {
     for part in [
         "source to sink, K/W",
         "contact only, K/W",
-        "torque, N\u{a0}m",
-        "stated 2.2 N\u{a0}m",
-        "largest 2.9 N\u{a0}m: yield of the bolt",
-        "lowest that strength allows, at 2.8 N\u{a0}m",
+        "torque, N·m",
+        "stated 2.2 N·m",
+        "largest 2.9 N·m: yield of the bolt",
+        "lowest that strength allows, at 2.8 N·m",
         "≤ 0.8",
     ] {
         assert!(holds(&texts, part), "{part} is missing in {texts:?}");
@@ -470,7 +472,7 @@ fn a_sweep_shows_stated_largest_best_and_required() {
 
 #[test]
 fn a_lowest_point_inside_the_window_is_named_best() {
-    let flag = "best 1.5 N\u{a0}m, worse beyond";
+    let flag = "best 1.5 N·m, worse beyond";
     let mut falling = sweep();
     assert!(!holds(
         &texts(&svg(&Drawing::Torque(Box::new(falling.clone()))).unwrap()),
@@ -484,10 +486,7 @@ fn a_lowest_point_inside_the_window_is_named_best() {
     assert!(!falling.gap_unknown());
     let texts = texts(&svg(&Drawing::Torque(Box::new(falling))).unwrap());
     assert!(holds(&texts, flag), "{texts:?}");
-    assert!(holds(
-        &texts,
-        "lowest that strength allows, at 1.5 N\u{a0}m"
-    ));
+    assert!(holds(&texts, "lowest that strength allows, at 1.5 N·m"));
 }
 
 #[test]

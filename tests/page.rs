@@ -187,6 +187,40 @@ fn a_page_needs_nothing_from_elsewhere() {
 }
 
 #[test]
+fn a_page_in_inches_draws_and_points_in_inches() {
+    let folder = made().folder.path();
+    let asked = ["lid.toml", "--out", "inch.html", "--field", "cone"];
+    let run = report(folder, &[&asked[..], &["--units", "inch"]].concat());
+    assert!(
+        run.status.success(),
+        "{}",
+        String::from_utf8_lossy(&run.stderr)
+    );
+    let html = fs::read_to_string(folder.join("inch.html")).expect("a page");
+    let drawn: String = html
+        .split("<svg")
+        .skip(1)
+        .filter_map(|rest| rest.split("</svg>").next())
+        .collect();
+    for part in ["x, in", "contact pressure, psi", "torque, in·lbf"] {
+        assert!(drawn.contains(part), "no {part} is drawn");
+    }
+    let stored = html.split("id=\"values\">").nth(1).expect("values");
+    let stored = stored.split("</script>").next().expect("their end");
+    let values: serde_json::Value = serde_json::from_str(stored).expect("JSON");
+    assert_eq!(values["length"], "in");
+    // 30 mm is the longer side of the lid.
+    let wide = values["window"][2].as_f64().expect("a number");
+    assert!((wide - 30.0 / 25.4).abs() < 0.01, "{wide}");
+    assert_eq!(values["layers"][0]["unit"], "psi");
+    for text in [&drawn[..], stored] {
+        for metric in ["MPa", " mm", "µm", "N·m", "W/(m²"] {
+            assert!(!text.contains(metric), "{metric} stands in a drawing");
+        }
+    }
+}
+
+#[test]
 fn texts_of_the_file_are_escaped_wherever_they_stand() {
     let html = &made().html;
     for raw in ["<script>window.hacked", "lid<b>", "& <i>"] {

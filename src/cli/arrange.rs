@@ -160,7 +160,7 @@ impl Arrange {
                 let answered = self.searched(read, (&stop, &mut keeper), console)?;
                 // What was found is told even where a file of it cannot be written.
                 let drawn = figure.as_ref().map_or(Ok(()), |(format, target)| {
-                    target.write(&chain::render(&answered.plot(), *format)?)?;
+                    target.write(&chain::render(&answered.plot(), *format, answered.system)?)?;
                     console.message(&format!("wrote {}\n", target.path.display()));
                     Ok(())
                 });

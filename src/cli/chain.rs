@@ -20,7 +20,7 @@ use crate::{
         self, Comparison, Contender, InMedium, Others, Ranking, RankingOptions, SweepOptions,
         Verification,
     },
-    units::{self, Quantity},
+    units::{self, Quantity, System},
 };
 
 /// A joint, the field it is to stand on, and who is told while it is solved.
@@ -348,7 +348,14 @@ pub fn nearest(name: &str, known: &[String]) -> Option<String> {
     diagnostic::nearest(name, known.iter().map(String::as_str))
 }
 
-/// A drawing as a file of the format.
-pub fn render(drawing: &Drawing, format: Format) -> Result<Vec<u8>, Trouble> {
-    figures::render(drawing, format).map_err(|fault| Trouble::Failure(fault.to_string()))
+/// A drawing as a file of the format in a system of units.
+pub fn render(drawing: &Drawing, format: Format, units: System) -> Result<Vec<u8>, Trouble> {
+    figures::render_in(drawing, format, units).map_err(|fault| Trouble::Failure(fault.to_string()))
+}
+
+/// A drawing as SVG for wide and for narrow screens.
+pub fn both_widths(drawing: &Drawing, units: System) -> Result<[String; 2], Trouble> {
+    let drawn = figures::svg_in(drawing, units)
+        .and_then(|wide| Ok([wide, figures::narrow_svg_in(drawing, units)?]));
+    drawn.map_err(|fault| Trouble::Failure(fault.to_string()))
 }

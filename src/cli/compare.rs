@@ -95,7 +95,11 @@ impl Compare {
         let (found, maps) = self.compared(&entries, (choice, figure.is_some()))?;
         if let Some((format, target)) = figure {
             let plot = plot(&entries, (&found, &maps));
-            let bytes = chain::render(&Drawing::Comparison(Box::new(plot)), format)?;
+            let bytes = chain::render(
+                &Drawing::Comparison(Box::new(plot)),
+                format,
+                self.shown.system(),
+            )?;
             target.write(&bytes)?;
             console.message(&format!("wrote {}\n", target.path.display()));
         }

@@ -11,6 +11,7 @@ use crate::{
         input,
         output::{Existing, Target},
         results,
+        shown::Shown,
     },
     figures::Format,
     joint::Joint,
@@ -57,6 +58,8 @@ pub struct Draw {
     maps: bool,
     #[command(flatten)]
     field: Field,
+    #[command(flatten)]
+    shown: Shown,
     #[command(flatten)]
     batch: Batch,
     /// Override a field: --set 'plate.box.thickness="6 mm"'
@@ -130,7 +133,7 @@ impl Draw {
         let mut files = Vec::new();
         for (name, drawing) in drawings::of_joint(joint, &fields) {
             for format in self.format.each() {
-                let bytes = chain::render(&drawing, *format)?;
+                let bytes = chain::render(&drawing, *format, self.shown.system())?;
                 files.push((path(folder, (name, *format)), bytes));
             }
         }

@@ -39,15 +39,20 @@ pub fn of_joint(joint: &Joint, fields: &Fields) -> Vec<(&'static str, Drawing)> 
     let (nominal, field) = (&fields.nominal, &fields.map);
     let furnish = |map: PlanMap| furnished(map, joint, (nominal, field));
     let title = title(joint, fields.interface);
+    let peak = peak(nominal, fields.interface);
     let pressure = match PlanPair::of(&title, field) {
-        Some(pair) => (
-            PRESSURE_AND_GAP,
-            Drawing::PressureAndGap(Box::new(pair.furnished(furnish))),
-        ),
-        None => (
-            PRESSURE,
-            Drawing::Plan(Box::new(furnish(PlanMap::pressure(&title, field)))),
-        ),
+        Some(mut pair) => {
+            pair.pressure.peak = peak;
+            let pair = pair.furnished(furnish);
+            (PRESSURE_AND_GAP, Drawing::PressureAndGap(Box::new(pair)))
+        }
+        None => {
+            let map = PlanMap {
+                peak,
+                ..PlanMap::pressure(&title, field)
+            };
+            (PRESSURE, Drawing::Plan(Box::new(furnish(map))))
+        }
     };
     let conductance = Drawing::Plan(Box::new(furnish(PlanMap::conductance(&title, field))));
     let heading = title.clone();
@@ -79,6 +84,24 @@ pub fn of_joint(joint: &Joint, fields: &Fields) -> Vec<(&'static str, Drawing)> 
         };
         drawings.push((SECTION, Drawing::Section(Box::new(plot))));
     }
+    drawings
+}
+
+/// The highest pressure of an interface as its results tell it, Pa: at the columns of the solution,
+/// between which a drawing reads.
+fn peak(nominal: &Estimate, interface: usize) -> Option<f64> {
+    let case = nominal.cases.first()?;
+    let peak = match case.interfaces.get(interface) {
+        Some(told) => told.peak,
+        None => case.pressure.peak,
+    };
+    Some(peak).filter(|peak| peak.is_finite())
+}
+
+/// What a page draws of an interface after the first: where the faces touch, and where heat crosses.
+pub fn of_further(joint: &Joint, fields: &Fields) -> Vec<(&'static str, Drawing)> {
+    let mut drawings = of_joint(joint, fields);
+    drawings.retain(|(name, _)| [PRESSURE, PRESSURE_AND_GAP, FLUX].contains(name));
     drawings
 }
 

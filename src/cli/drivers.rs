@@ -133,7 +133,7 @@ impl Drivers {
                 let found = self.found(joint)?;
                 if let Some((format, target)) = &figure {
                     let drawing = Drawing::Tornado(Box::new(found.clone()));
-                    target.write(&chain::render(&drawing, *format)?)?;
+                    target.write(&chain::render(&drawing, *format, self.shown.system())?)?;
                     console.message(&format!("wrote {}\n", target.path.display()));
                 }
                 Ok(Box::new(Told {

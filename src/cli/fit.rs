@@ -10,6 +10,7 @@ use crate::{
         input::{self, Source},
         output::{Existing, Target},
         results,
+        shown::Shown,
     },
     diagnostic::{
         self, Caution, Colour, Fault,
@@ -118,6 +119,8 @@ pub struct Fit {
     /// Seed of the draws
     #[arg(long, value_name = "N", default_value_t = 1)]
     seed: u64,
+    #[command(flatten)]
+    shown: Shown,
     /// Override a field of the joint: --set 'plate.box.thickness="6 mm"'
     #[arg(long = "set", value_name = "KEY=VALUE", requires = "unknown")]
     sets: Vec<String>,
@@ -288,7 +291,8 @@ impl Fit {
                 title: stem(&source.name),
                 series: series.clone(),
             };
-            draw((&Drawing::Fit(Box::new(plot)), *format), target, console)?;
+            let drawing = Drawing::Fit(Box::new(plot));
+            draw((&drawing, *format, self.shown), target, console)?;
         }
         if self.json {
             console.json(
@@ -296,7 +300,11 @@ impl Fit {
                 self.layout(),
             )?;
         } else {
-            console.result(&text::painted(&fit::series(&series, &source.name)))?;
+            console.result(&text::painted(&fit::series_in(
+                &series,
+                &source.name,
+                self.shown.system(),
+            )))?;
         }
         if let Some(target) = out {
             target.write(block.as_bytes())?;
@@ -361,7 +369,7 @@ impl Fit {
                 answer: answer.clone(),
             };
             draw(
-                (&Drawing::Profile(Box::new(plot)), *format),
+                (&Drawing::Profile(Box::new(plot)), *format, self.shown),
                 target,
                 console,
             )?;
@@ -467,11 +475,11 @@ fn refused_json(source: &Source, faults: &[Fault]) -> serde_json::Value {
 }
 
 fn draw(
-    (drawing, format): (&Drawing, Format),
+    (drawing, format, shown): (&Drawing, Format, Shown),
     target: &Target,
     console: &mut Console,
 ) -> Result<(), Trouble> {
-    target.write(&chain::render(drawing, format)?)?;
+    target.write(&chain::render(drawing, format, shown.system())?)?;
     console.message(&format!("wrote {}\n", target.path.display()));
     Ok(())
 }

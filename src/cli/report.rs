@@ -15,9 +15,10 @@ use crate::{
         results::{self, stem},
         shown::Shown,
     },
-    figures::{Drawing, Format},
+    figures::Drawing,
     joint::{self, Joint, Version},
     report::page::{self, Contents, Fields, Figure, Figures},
+    units::System,
 };
 use clap::Args;
 use sha2::{Digest, Sha256};
@@ -149,7 +150,7 @@ impl Report {
         let entries: Vec<Entry> = versions_of(None, versions.clone()).collect();
         let found = chain::handed(&task, &entries, &asked)
             .map_err(|trouble| trouble.of_file(&source.name))?;
-        let figures = figures(joint, &entries, &found)?;
+        let figures = figures(joint, (&entries, &found), self.shown.system())?;
         let stated = joint::stated(&source.text, (&self.sets, place));
         let page = page::page(&Contents {
             joint,
@@ -276,13 +277,16 @@ fn digest(text: &str) -> String {
 }
 
 /// Every drawing of a page.
-fn figures(joint: &Joint, entries: &[Entry], found: &Handed) -> Result<Figures, Trouble> {
+fn figures(
+    joint: &Joint,
+    (entries, found): (&[Entry], &Handed),
+    units: System,
+) -> Result<Figures, Trouble> {
     let drawn = |drawing: &Drawing, caption: &str, plan: bool| -> Result<Figure, Trouble> {
-        let bytes = chain::render(drawing, Format::Svg)?;
-        let svg = String::from_utf8(bytes)
-            .map_err(|_| Trouble::Failure("a figure is no text".to_owned()))?;
+        let [svg, narrow] = chain::both_widths(drawing, units)?;
         Ok(Figure {
             svg,
+            narrow,
             caption: caption.to_owned(),
             plan,
         })
@@ -298,6 +302,14 @@ fn figures(joint: &Joint, entries: &[Entry], found: &Handed) -> Result<Figures, 
     for (name, drawing) in drawings::of_joint(joint, &found.fields) {
         let (caption, plan) = drawings::told(name);
         all.fields.push(drawn(&drawing, caption, plan)?);
+    }
+    for fields in &found.further {
+        let between = joint.interface_name(fields.interface);
+        for (name, drawing) in drawings::of_further(joint, fields) {
+            let (caption, _) = drawings::told(name);
+            let caption = format!("{between}: {caption}");
+            all.fields.push(drawn(&drawing, &caption, false)?);
+        }
     }
     if let Some(sweep) = &found.torque {
         all.torque = plain(

@@ -6,7 +6,7 @@ use clap::{Args, ValueEnum};
 /// In which units results are told.
 #[derive(Clone, Copy, Debug, Args)]
 pub struct Shown {
-    /// Units of what is printed for people; JSON and tables of a folder are SI always
+    /// Units of what is printed and drawn for people; JSON and tables of a folder are SI always
     #[arg(
         long,
         value_enum,

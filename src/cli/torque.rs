@@ -110,7 +110,7 @@ impl Torque {
                 let found = self.found(joint, source)?;
                 if let Some((format, target)) = &figure {
                     let drawing = Drawing::Torque(Box::new(found.clone()));
-                    target.write(&chain::render(&drawing, *format)?)?;
+                    target.write(&chain::render(&drawing, *format, self.shown.system())?)?;
                     console.message(&format!("wrote {}\n", target.path.display()));
                 }
                 Ok(Box::new(Told {

@@ -9,11 +9,13 @@ use crate::{
         legend::{Sample, legend},
         lettering::{Anchor, Lettering},
         ramp,
+        setting::Width,
         sheet::{ACCENT, Colour, FAINT, GREY, INK, LABEL, NARROW, Sheet, Stroke, WIDE, circle},
     },
     joint::Limit,
     layout::{Answer, Goal, Row, Verdict},
     report::number::four,
+    units::{Shown, System},
 };
 
 const WIDTH: f64 = 620.0;
@@ -41,7 +43,7 @@ pub struct ArrangePlot {
 }
 
 /// Draws the search.
-pub(super) fn draw(plot: &ArrangePlot) -> Result<Sheet, FigureError> {
+pub(super) fn draw(plot: &ArrangePlot, units: System) -> Result<Sheet, FigureError> {
     let answer = &plot.answer;
     if answer.rows.is_empty() {
         return Err(FigureError::Empty("the search"));
@@ -54,7 +56,7 @@ pub(super) fn draw(plot: &ArrangePlot) -> Result<Sheet, FigureError> {
         .iter()
         .map(|row| {
             let value = drawable(row.value(), "a layout")?;
-            Ok([drawable(cost(answer, row), "a layout")?, value])
+            Ok([drawable(cost(answer, row, units), "a layout")?, value])
         })
         .collect::<Result<Vec<[f64; 2]>, FigureError>>()?;
     let limit = match answer.target.limit {
@@ -65,17 +67,18 @@ pub(super) fn draw(plot: &ArrangePlot) -> Result<Sheet, FigureError> {
     let subtitle = format!(
         "{} against {}, {}",
         answer.target.measure.name(),
-        cost_title(answer),
+        cost_title(answer, units),
         match answer.cases.as_slice() {
             [only] => format!("{only} case"),
             several => format!("the worst of {}", several.join(" and ")),
         }
     );
-    let top = sheet.header(&answer.title, &subtitle) + 10.0;
+    let top = sheet.header(&answer.title, &subtitle, Width::Full) + 10.0;
     let charted = Charted {
         answer,
         points: &points,
         limit,
+        units,
     };
     let bottom = chart(&mut sheet, top, charted);
     let below = plans(&mut sheet, bottom + 12.0, plot)?;
@@ -83,17 +86,20 @@ pub(super) fn draw(plot: &ArrangePlot) -> Result<Sheet, FigureError> {
     Ok(sheet)
 }
 
-fn cost(answer: &Answer, row: &Row) -> f64 {
+fn cost(answer: &Answer, row: &Row, units: System) -> f64 {
     match answer.goal {
-        Goal::Mass => 1e3 * row.mass,
+        Goal::Mass => units.unit(Shown::SmallMass).of(row.mass),
         Goal::Bolts | Goal::Resistance => row.places.len() as f64,
     }
 }
 
-fn cost_title(answer: &Answer) -> &'static str {
+fn cost_title(answer: &Answer, units: System) -> String {
     match answer.goal {
-        Goal::Mass => "mass of the fasteners, g",
-        Goal::Bolts | Goal::Resistance => "bolts",
+        Goal::Mass => format!(
+            "mass of the fasteners, {}",
+            units.unit(Shown::SmallMass).name
+        ),
+        Goal::Bolts | Goal::Resistance => "bolts".to_owned(),
     }
 }
 
@@ -104,6 +110,7 @@ struct Charted<'a> {
     /// Cost and resistance of every row.
     points: &'a [[f64; 2]],
     limit: Option<(f64, Limit)>,
+    units: System,
 }
 
 /// The rows as dots, the front as a line, the requirement; returns the lower edge of the key.
@@ -114,6 +121,7 @@ fn chart(
         answer,
         points,
         limit,
+        units,
     }: Charted,
 ) -> f64 {
     let extent = |k: usize| {
@@ -143,7 +151,7 @@ fn chart(
     };
     let title = format!("{}, K/W", answer.target.measure.name());
     axis::left(sheet, frame, (&up, &title), Grid::Faint);
-    axis::bottom(sheet, frame, (&across, Some(cost_title(answer))));
+    axis::bottom(sheet, frame, (&across, Some(&cost_title(answer, units))));
     let at = |[x, y]: [f64; 2]| {
         [
             frame.left + across.place(x) * frame.width(),

@@ -13,8 +13,10 @@ use crate::{
         picture::Picture,
         plan::{PlanMap, small},
         ramp::{self, Ramp},
+        setting::{Setting, Width},
         sheet::{ACCENT, Colour, FAINT, GREY, INK, LABEL, NARROW, PAPER, Sheet, Stroke, WIDE},
     },
+    units::{Shown, System},
 };
 
 /// Several joints on one sheet.
@@ -45,15 +47,37 @@ pub struct ComparisonRow {
     pub pressure: PlanMap,
 }
 
-const MARGIN: f64 = 20.0;
-/// Room for names, points.
-const NAMES: f64 = 165.0;
-/// Room for the bands, points.
-const BANDS: f64 = 250.0;
-/// Most a map may take, points.
-const MAP: [f64; 2] = [160.0, 82.0];
+/// Room on the sheet, points.
+struct Room {
+    margin: f64,
+    /// For names.
+    names: f64,
+    /// For the bands.
+    bands: f64,
+    /// Most a map may take.
+    map: [f64; 2],
+    /// For the bar of the colours at least.
+    bar: f64,
+}
+
+const FULL: Room = Room {
+    margin: 20.0,
+    names: 165.0,
+    bands: 250.0,
+    map: [160.0, 82.0],
+    bar: 120.0,
+};
+const NARROW_ROOM: Room = Room {
+    margin: 12.0,
+    names: 94.0,
+    bands: 112.0,
+    map: [88.0, 60.0],
+    bar: 92.0,
+};
 /// Least height of a row, points.
 const ROW: f64 = 52.0;
+/// Height of a line, points.
+const LINE: f64 = 14.0;
 /// Half of the height of a band, points.
 const HALF: f64 = 7.0;
 /// Between the columns and between the rows, points.
@@ -62,10 +86,16 @@ const REQUIRED: Stroke = Stroke::dashed(WIDE, ACCENT, &[8.0, 3.0]);
 const BAND: Colour = Colour(0xCB, 0xDD, 0xE8);
 
 /// Draws the comparison.
-pub(super) fn draw(plot: &ComparisonPlot) -> Result<Sheet, FigureError> {
+pub(super) fn draw(plot: &ComparisonPlot, setting: Setting) -> Result<Sheet, FigureError> {
+    let (units, room) = match setting.width {
+        Width::Full => (setting.units, FULL),
+        Width::Narrow => (setting.units, NARROW_ROOM),
+    };
+    let told = told_in(plot, units);
+    let plot = &told;
     let across = band_axis(plot)?;
     let colours = colour_axis(plot)?;
-    let scale = length_scale(plot)?;
+    let scale = length_scale(plot, room.map)?;
     let sizes = plot
         .rows
         .iter()
@@ -73,16 +103,22 @@ pub(super) fn draw(plot: &ComparisonPlot) -> Result<Sheet, FigureError> {
         .collect::<Result<Vec<[f64; 2]>, FigureError>>()?;
     let widest = sizes
         .iter()
-        .fold(120.0, |most: f64, size| most.max(size[0]));
-    let left = MARGIN + NAMES;
-    let maps = left + BANDS + GAP;
-    let mut sheet = Sheet::new(maps + widest + MARGIN);
-    let top = sheet.header(&plot.title, &plot.subtitle) + 8.0;
-    let whole: f64 = sizes.iter().map(|size| row_height(size[1])).sum();
+        .fold(room.bar, |most: f64, size| most.max(size[0]));
+    let left = room.margin + room.names;
+    let maps = left + room.bands + GAP;
+    let mut sheet = Sheet::new(maps + widest + room.margin);
+    let top = sheet.header(&plot.title, &plot.subtitle, setting.width) + 8.0;
+    let lines: Vec<Vec<Line>> = plot.rows.iter().map(|row| lines(row, &room)).collect();
+    let heights: Vec<f64> = lines
+        .iter()
+        .zip(&sizes)
+        .map(|(lines, size)| row_height(size[1], lines.len()))
+        .collect();
+    let whole: f64 = heights.iter().sum();
     let frame = Frame {
         left,
         top,
-        right: left + BANDS,
+        right: left + room.bands,
         bottom: top + whole,
     };
     upright_lines(&mut sheet, frame, &across);
@@ -94,10 +130,10 @@ pub(super) fn draw(plot: &ComparisonPlot) -> Result<Sheet, FigureError> {
         sheet.line(&[[x, frame.top], [x, frame.bottom]], REQUIRED);
     }
     let mut y = top;
-    for (row, size) in plot.rows.iter().zip(&sizes) {
-        let height = row_height(size[1]);
+    for (index, (row, size)) in plot.rows.iter().zip(&sizes).enumerate() {
+        let height = heights[index];
         let middle = y + 0.5 * height;
-        name(&mut sheet, row, middle);
+        name(&mut sheet, &lines[index], [room.margin, middle]);
         band(&mut sheet, row, (frame, middle), &across)?;
         let corner = [maps, middle - 0.5 * size[1]];
         small::draw(&mut sheet, &row.pressure, (corner, scale), &colours)?;
@@ -111,20 +147,38 @@ pub(super) fn draw(plot: &ComparisonPlot) -> Result<Sheet, FigureError> {
         bottom: frame.bottom + 11.0,
     };
     sheet.pictures.push(Picture::level_bar(bar, Ramp::Sea));
-    axis::bottom(&mut sheet, bar, (&colours, Some("contact pressure, MPa")));
+    let title = match setting.width {
+        Width::Full => "contact pressure",
+        Width::Narrow => "pressure",
+    };
+    let title = format!("{title}, {}", units.unit(Shown::Pressure).name);
+    axis::bottom(&mut sheet, bar, (&colours, Some(&title)));
     sheet.closed_within(bar, &corners(bar), Stroke::solid(NARROW, GREY));
-    let room = Frame {
-        left: MARGIN,
+    let below = Frame {
+        left: room.margin,
         top: bar.bottom + BELOW + 6.0,
-        right: sheet.size[0] - MARGIN,
+        right: sheet.size[0] - room.margin,
         bottom: f64::INFINITY,
     };
-    sheet.size[1] = legend(&mut sheet, room, &key(plot)) + 12.0;
+    sheet.size[1] = legend(&mut sheet, below, &key(plot)) + 12.0;
     Ok(sheet)
 }
 
-fn row_height(map: f64) -> f64 {
-    ROW.max(map + 14.0)
+/// The same joints with their pressures and notes in a system of units.
+fn told_in(plot: &ComparisonPlot, units: System) -> ComparisonPlot {
+    let row = |row: &ComparisonRow| ComparisonRow {
+        notes: row.notes.iter().map(|note| units.restated(note)).collect(),
+        pressure: row.pressure.told_in(units),
+        ..row.clone()
+    };
+    ComparisonPlot {
+        rows: plot.rows.iter().map(row).collect(),
+        ..plot.clone()
+    }
+}
+
+fn row_height(map: f64, lines: usize) -> f64 {
+    ROW.max(map + 14.0).max(LINE * lines as f64 + 10.0)
 }
 
 /// One axis for all bands.
@@ -168,10 +222,10 @@ fn colour_axis(plot: &ComparisonPlot) -> Result<Axis, FigureError> {
 }
 
 /// Points to the metre at which every map finds room.
-fn length_scale(plot: &ComparisonPlot) -> Result<f64, FigureError> {
+fn length_scale(plot: &ComparisonPlot, most: [f64; 2]) -> Result<f64, FigureError> {
     plot.rows.iter().try_fold(f64::INFINITY, |scale, row| {
         let [wide, tall] = small::size(&row.pressure, 1.0)?;
-        Ok(scale.min(MAP[0] / wide).min(MAP[1] / tall))
+        Ok(scale.min(most[0] / wide).min(most[1] / tall))
     })
 }
 
@@ -186,21 +240,32 @@ fn upright_lines(sheet: &mut Sheet, frame: Frame, axis: &Axis) {
     }
 }
 
-fn name(sheet: &mut Sheet, row: &ComparisonRow, middle: f64) {
+/// A line beside a band, and how it is set.
+type Line = (String, Lettering);
+
+/// Name and notes in as many lines as they take.
+fn lines(row: &ComparisonRow, room: &Room) -> Vec<Line> {
     let mut lettering = Lettering::plain(LABEL, INK, Anchor::Start);
     if row.best {
         lettering.weight = Weight::Bold;
     }
     let small = Lettering::plain(LABEL - 1.5, GREY, Anchor::Start);
-    let lines = lettering.wrapped(&row.name, NAMES - 10.0, 2);
-    let mut y = middle - 7.0 * (lines.len() + row.notes.len()) as f64 + 11.0;
-    for line in lines {
-        sheet.text([MARGIN, y], line, lettering);
-        y += 14.0;
-    }
+    let wrapped = |text: &str, lettering: Lettering, most: usize| {
+        let lines = lettering.wrapped(text, room.names - 10.0, most);
+        lines.into_iter().map(move |line| (line, lettering))
+    };
+    let mut lines: Vec<Line> = wrapped(&row.name, lettering, 3).collect();
     for note in &row.notes {
-        sheet.text([MARGIN, y], small.shortened(note, NAMES - 10.0), small);
-        y += 13.0;
+        lines.extend(wrapped(note, small, 2));
+    }
+    lines
+}
+
+fn name(sheet: &mut Sheet, lines: &[Line], [left, middle]: [f64; 2]) {
+    let mut y = middle - 0.5 * LINE * lines.len() as f64 + 11.0;
+    for (line, lettering) in lines {
+        sheet.text([left, y], line.clone(), *lettering);
+        y += LINE;
     }
 }
 

@@ -1,15 +1,19 @@
 //! Conductance gathered from the hole outwards, against the distance from the bolt axis.
 
-use crate::figures::{
-    FigureError,
-    axis::{self, Axis, BELOW, Grid},
-    clip::Frame,
-    drawable,
-    flags::{Flag, Flags},
-    legend::{Sample, legend},
-    lettering::{Anchor, Lettering},
-    ramp,
-    sheet::{Colour, GREY, INK, LABEL, NARROW, Sheet, Stroke},
+use crate::{
+    figures::{
+        FigureError,
+        axis::{self, Axis, BELOW, Grid},
+        clip::Frame,
+        drawable,
+        flags::{Flag, Flags},
+        legend::{Sample, legend},
+        lettering::{Anchor, Lettering},
+        ramp,
+        setting::{Setting, Width},
+        sheet::{GREY, INK, LABEL, NARROW, Sheet, Stroke},
+    },
+    units::{Shown, Unit},
 };
 
 /// The plot.
@@ -41,7 +45,6 @@ pub struct RadiusMark {
     pub radius: f64,
 }
 
-const MARGIN: f64 = 20.0;
 const WIDTH: f64 = 560.0;
 const HEIGHT: f64 = 250.0;
 const END: Lettering = Lettering::plain(LABEL - 1.0, INK, Anchor::Start);
@@ -53,12 +56,14 @@ const SHARES: [f64; 2] = [0.5, 0.95];
 struct EndLabel {
     value: f64,
     text: String,
-    colour: Colour,
+    stroke: Stroke,
 }
 
 /// Draws the plot.
-pub(super) fn draw(plot: &CumulativePlot) -> Result<Sheet, FigureError> {
-    let curves = shown(plot)?;
+pub(super) fn draw(plot: &CumulativePlot, setting: Setting) -> Result<Sheet, FigureError> {
+    let length = setting.units.unit(Shown::Length);
+    let (margin, width) = (setting.width.margin(), setting.width.sheet(WIDTH));
+    let curves = shown(plot, length)?;
     let farthest = curves
         .iter()
         .flat_map(|curve| curve.iter().map(|p| p[0]))
@@ -71,6 +76,8 @@ pub(super) fn draw(plot: &CumulativePlot) -> Result<Sheet, FigureError> {
     let y_axis = Axis::over(0.0, 1.06 * highest);
 
     let single = curves.len() == 1;
+    // On a narrow sheet names have no room beside the curves and stand in the key.
+    let named = !single && setting.width == Width::Full;
     let ends = end_labels(plot, &curves);
     let percent = Axis {
         high: 106.0,
@@ -78,31 +85,33 @@ pub(super) fn draw(plot: &CumulativePlot) -> Result<Sheet, FigureError> {
     };
     let beside = if single {
         axis::side_room(&percent, HEIGHT)
-    } else {
+    } else if named {
         ends.iter().map(|e| END.width(&e.text)).fold(0.0, f64::max) + 22.0
+    } else {
+        8.0
     };
-    let mut sheet = Sheet::new(WIDTH);
+    let mut sheet = Sheet::new(width);
     let subtitle = match plot.curves.as_slice() {
         [only] => format!("conductance gathered within a radius: {}", only.label),
         _ => "conductance gathered within a radius of each bolt".into(),
     };
-    let top = sheet.header(&plot.title, &subtitle);
-    let left = MARGIN + axis::side_room(&y_axis, HEIGHT);
-    let right = WIDTH - MARGIN - beside;
+    let top = sheet.header(&plot.title, &subtitle, setting.width);
+    let left = margin + axis::side_room(&y_axis, HEIGHT);
+    let right = width - margin - beside;
     let across = |radius: f64| left + x_axis.place(radius) * (right - left);
 
     let mut marks = Vec::new();
     for mark in &plot.marks {
-        let radius = drawable(mark.radius * 1e3, "the marks")?;
+        let radius = drawable(length.of(mark.radius), "the marks")?;
         if (0.0..=x_axis.high).contains(&radius) {
             marks.push(Flag {
                 x: across(radius),
-                text: format!("{} {} mm", mark.name, axis::plain(radius)),
+                text: format!("{} {} {}", mark.name, axis::plain(radius), length.name),
                 stroke: Stroke::dashed(NARROW, GREY, &[4.0, 2.5]),
             });
         }
     }
-    let flags = Flags::arranged(marks, [left, WIDTH - MARGIN]);
+    let flags = Flags::arranged(marks, [left, width - margin]);
     let top = top + flags.height() + 8.0;
     let frame = Frame {
         left,
@@ -117,11 +126,8 @@ pub(super) fn draw(plot: &CumulativePlot) -> Result<Sheet, FigureError> {
         (&y_axis, "conductance, W/K"),
         Grid::Faint,
     );
-    axis::bottom(
-        &mut sheet,
-        frame,
-        (&x_axis, Some("distance from the bolt axis, mm")),
-    );
+    let title = format!("distance from the bolt axis, {}", length.name);
+    axis::bottom(&mut sheet, frame, (&x_axis, Some(&title)));
     flags.draw(&mut sheet, frame, frame.bottom);
     if single {
         let share = Axis {
@@ -152,25 +158,29 @@ pub(super) fn draw(plot: &CumulativePlot) -> Result<Sheet, FigureError> {
             }
         }
     }
-    if !single {
+    if named {
         draw_ends(&mut sheet, frame, &y_axis, &ends);
     }
     let room = Frame {
-        left: MARGIN,
+        left: margin,
         top: frame.bottom + BELOW + 6.0,
-        right: WIDTH - MARGIN,
+        right: width - margin,
         bottom: f64::INFINITY,
     };
-    let dots = (
+    let mut items = vec![(
         Sample::Dot(stroke(0, curves.len()).colour),
         "50 % and 95 % of the total".to_owned(),
-    );
-    sheet.size[1] = legend(&mut sheet, room, &[dots]) + 12.0;
+    )];
+    if !single && !named {
+        let line = |end: EndLabel| (Sample::Line(end.stroke), end.text);
+        items.extend(ends.into_iter().map(line));
+    }
+    sheet.size[1] = legend(&mut sheet, room, &items) + 12.0;
     Ok(sheet)
 }
 
-/// The curves in mm and W/K.
-fn shown(plot: &CumulativePlot) -> Result<Vec<Vec<[f64; 2]>>, FigureError> {
+/// The curves in a unit of length and W/K.
+fn shown(plot: &CumulativePlot, length: Unit) -> Result<Vec<Vec<[f64; 2]>>, FigureError> {
     if plot.curves.is_empty() {
         return Err(FigureError::Empty("the curves"));
     }
@@ -185,7 +195,7 @@ fn shown(plot: &CumulativePlot) -> Result<Vec<Vec<[f64; 2]>>, FigureError> {
                 .iter()
                 .map(|&(radius, value)| {
                     Ok([
-                        drawable(radius * 1e3, "a curve")?,
+                        drawable(length.of(radius), "a curve")?,
                         drawable(value, "a curve")?,
                     ])
                 })
@@ -251,7 +261,7 @@ fn end_labels(plot: &CumulativePlot, curves: &[Vec<[f64; 2]>]) -> Vec<EndLabel> 
             EndLabel {
                 value,
                 text: names + &total,
-                colour: stroke(group[0], curves.len()).colour,
+                stroke: stroke(group[0], curves.len()),
             }
         })
         .collect()
@@ -277,7 +287,7 @@ fn draw_ends(sheet: &mut Sheet, frame: Frame, y_axis: &Axis, ends: &[EndLabel]) 
     for (end, height) in ends.iter().zip(heights) {
         let from = frame.bottom - y_axis.place(end.value) * frame.height();
         let line = [[frame.right + 2.0, from], [frame.right + 16.0, height]];
-        sheet.line(&line, Stroke::solid(NARROW, end.colour));
+        sheet.line(&line, Stroke::solid(NARROW, end.stroke.colour));
         let at = [frame.right + 20.0, height + 0.36 * END.size];
         sheet.text(at, end.text.clone(), END);
     }

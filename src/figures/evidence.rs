@@ -8,6 +8,7 @@ use crate::figures::{
     fonts::Weight,
     legend::{Sample, corners, legend},
     lettering::{Anchor, Lettering},
+    setting::Width,
     sheet::{ACCENT, Colour, FAINT, GREY, INK, LABEL, NARROW, Sheet, Stroke},
 };
 
@@ -85,7 +86,7 @@ pub(super) fn draw(plot: &EvidencePlot) -> Result<Sheet, FigureError> {
     let left = MARGIN + NAMES;
     let right = left + PANEL;
     let mut sheet = Sheet::new(right + 14.0 + VALUES + MARGIN);
-    let mut top = sheet.header(&plot.title, &plot.told) + 4.0;
+    let mut top = sheet.header(&plot.title, &plot.told, Width::Full) + 4.0;
     for panel in &plot.panels {
         let frame = Frame {
             left,

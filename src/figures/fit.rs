@@ -8,6 +8,7 @@ use crate::{
         drawable,
         legend::{Sample, hollow_dot, legend},
         ramp,
+        setting::Width,
         sheet::{ACCENT, Colour, GREY, NARROW, Sheet, Stroke},
     },
     fit::{
@@ -16,6 +17,7 @@ use crate::{
         unknown::{Answer, Question},
     },
     report::fit::{measured, unit},
+    units::System,
 };
 
 const MARGIN: f64 = 20.0;
@@ -54,11 +56,11 @@ pub struct ProfilePlot {
 type Bands = Vec<(f64, [f64; 5])>;
 
 /// Draws readings with laws and bands on logarithmic axes.
-pub(super) fn draw(plot: &FitPlot) -> Result<Sheet, FigureError> {
+pub(super) fn draw(plot: &FitPlot, units: System) -> Result<Sheet, FigureError> {
     const WHAT: &str = "the readings";
     let series = &plot.series;
     let (x_quantity, y_quantity) = (series.abscissa.quantity(), series.ordinate.fitted());
-    let ((x_unit, x_size), (y_unit, y_size)) = (unit(x_quantity), unit(y_quantity));
+    let ((x_unit, x_size), (y_unit, y_size)) = (unit(x_quantity, units), unit(y_quantity, units));
     let mut extent = [[f64::INFINITY, f64::NEG_INFINITY]; 2];
     let mut widen = |axis: usize, value: f64| -> Result<(), FigureError> {
         let value = drawable(value, WHAT)?;
@@ -96,7 +98,7 @@ pub(super) fn draw(plot: &FitPlot) -> Result<Sheet, FigureError> {
         measured(series.ordinate),
         series.abscissa.name()
     );
-    let top = sheet.header(&plot.title, &subtitle) + 8.0;
+    let top = sheet.header(&plot.title, &subtitle, Width::Full) + 8.0;
     let frame = Frame {
         left: MARGIN + axis::side_room(&y_axis, HEIGHT),
         top,
@@ -256,7 +258,7 @@ pub(super) fn draw_profile(plot: &ProfilePlot) -> Result<Sheet, FigureError> {
         Verdict::Undetermined => "NOT determined by these readings",
     };
     let name = asked.unknown.name();
-    let top = sheet.header(&answer.title, &format!("{verdict}: {name}")) + 8.0;
+    let top = sheet.header(&answer.title, &format!("{verdict}: {name}"), Width::Full) + 8.0;
     let frame = Frame {
         left: MARGIN + axis::side_room(&y_axis, HEIGHT),
         top,

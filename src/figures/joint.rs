@@ -11,9 +11,11 @@ use crate::{
         legend::{Sample, corners, legend},
         lettering::{Anchor, Lettering},
         plan::{PlanMap, View, extent, parts},
+        setting::{NARROW_SHEET, Setting, Width},
         sheet::{ACCENT, Colour, INK, LABEL, NARROW, PAPER, Sheet, Stroke, WIDE},
     },
     resistance::columns::Across,
+    units::{Shown, Unit},
 };
 
 /// The joint with what is needed to draw it.
@@ -82,7 +84,6 @@ pub enum CutEnd {
     Thread(f64),
 }
 
-const MARGIN: f64 = 20.0;
 /// Largest width and height of the plan, points.
 const WIDEST: [f64; 2] = [560.0, 360.0];
 /// Least and most room beside the cut for what is written of the plates, points.
@@ -105,21 +106,36 @@ const HATCH: Colour = Colour(0x8D, 0x96, 0x9E);
 const STEEL: Colour = Colour(0xE4, 0xE8, 0xEB);
 
 /// Draws plan and cut.
-pub(super) fn draw(plot: &JointPlot) -> Result<Sheet, FigureError> {
+pub(super) fn draw(plot: &JointPlot, setting: Setting) -> Result<Sheet, FigureError> {
     let window = plot.plan.window;
     let [wide, tall] = extent(window)?;
-    let points_per_metre = (WIDEST[0] / wide).min(WIDEST[1] / tall);
+    let (units, margin) = (setting.units, setting.width.margin());
+    let length = units.unit(Shown::Length);
+    let axes = [0, 1].map(|k| Axis::over(length.of(window[k]), length.of(window[k + 2])));
+    let along = plot
+        .cut
+        .as_ref()
+        .map_or(0.0, |cut| cut.stack.range[1] - cut.stack.range[0]);
+    let points_per_metre = match setting.width {
+        Width::Full => (WIDEST[0] / wide).min(WIDEST[1] / tall),
+        Width::Narrow => {
+            let side = axis::side_room(&axes[1], WIDEST[1]);
+            let room = NARROW_SHEET - 2.0 * margin - side - 10.0;
+            (room / wide.max(along)).min(WIDEST[1] / tall)
+        }
+    };
     let (width, height) = (wide * points_per_metre, tall * points_per_metre);
-    let axes = [0, 1].map(|k| Axis::over(window[k] * 1e3, window[k + 2] * 1e3));
-    let left = MARGIN + axis::side_room(&axes[1], height);
-    let along = plot.cut.as_ref().map_or(0.0, |cut| {
-        (cut.stack.range[1] - cut.stack.range[0]) * points_per_metre
-    });
-    let written = plot.cut.iter().flat_map(|cut| &cut.labels);
-    let beside = written.map(|label| WRITTEN.width(label) + 20.0);
+    let along = along * points_per_metre;
+    let left = margin + axis::side_room(&axes[1], height);
+    let labels = plot.cut.iter().flat_map(|cut| &cut.labels);
+    let labels: Vec<String> = labels.map(|label| units.restated(label)).collect();
+    let beside = labels.iter().map(|label| WRITTEN.width(label) + 20.0);
     let beside = beside.fold(BESIDE[0], f64::max).min(BESIDE[1]);
-    let mut sheet = Sheet::new((left + width.max(along) + beside + MARGIN).max(360.0));
-    let top = sheet.header(&plot.plan.title, &plot.told) + 14.0;
+    let mut sheet = Sheet::new(match setting.width {
+        Width::Full => (left + width.max(along) + beside + margin).max(360.0),
+        Width::Narrow => (left + width.max(along) + margin).max(NARROW_SHEET),
+    });
+    let top = sheet.header(&plot.plan.title, &plot.told, setting.width) + 14.0;
     let frame = Frame {
         left,
         top,
@@ -133,24 +149,58 @@ pub(super) fn draw(plot: &JointPlot) -> Result<Sheet, FigureError> {
         ground: None,
     };
     parts::draw(&mut sheet, &view, &plot.plan);
-    axis::left(&mut sheet, frame, (&axes[1], "y, mm"), Grid::Without);
-    axis::bottom(&mut sheet, frame, (&axes[0], Some("x, mm")));
+    axis::left(
+        &mut sheet,
+        frame,
+        (&axes[1], &format!("y, {}", length.name)),
+        Grid::Without,
+    );
+    axis::bottom(
+        &mut sheet,
+        frame,
+        (&axes[0], Some(&format!("x, {}", length.name))),
+    );
     let mut bottom = frame.bottom + BELOW;
     let mut items = parts::key(&plot.plan, &Axis::over(0.0, 1.0), None);
+    let beside_cut = match setting.width {
+        Width::Full => &labels[..],
+        Width::Narrow => &[],
+    };
     if let Some(cut) = &plot.cut {
         line_of_cut(&mut sheet, &view, cut.stack.across);
-        bottom = section(&mut sheet, cut, (left, bottom + 8.0, points_per_metre))?;
+        bottom = section(
+            &mut sheet,
+            (cut, beside_cut, length),
+            (left, bottom + 8.0, points_per_metre),
+        )?;
+        if setting.width == Width::Narrow {
+            bottom = listed(&mut sheet, (left, bottom), &labels);
+        }
         items.push((Sample::Line(CUT), "line of the cut".to_owned()));
         items.push((Sample::Hatch, "cut plate".to_owned()));
     }
     let room = Frame {
-        left: MARGIN,
+        left: margin,
         top: bottom + 8.0,
-        right: sheet.size[0] - MARGIN,
+        right: sheet.size[0] - margin,
         bottom: f64::INFINITY,
     };
     sheet.size[1] = legend(&mut sheet, room, &items) + 12.0;
     Ok(sheet)
+}
+
+/// What each plate is, from above, below the cut; returns the lower edge.
+fn listed(sheet: &mut Sheet, (left, top): (f64, f64), labels: &[String]) -> f64 {
+    let mut y = top + 8.0;
+    let room = sheet.size[0] - left - 12.0;
+    let all = std::iter::once("plates from above:").chain(labels.iter().map(String::as_str));
+    for label in all {
+        for line in WRITTEN.wrapped(label, room, 2) {
+            y += 14.0;
+            sheet.text([left, y], line, WRITTEN);
+        }
+    }
+    y + 6.0
 }
 
 /// Where the plan is cut, with its letters.
@@ -215,7 +265,7 @@ impl Place {
 /// The cut below the plan; returns the lower edge.
 fn section(
     sheet: &mut Sheet,
-    cut: &JointCut,
+    (cut, written, length): (&JointCut, &[String], Unit),
     (left, top, scale): (f64, f64, f64),
 ) -> Result<f64, FigureError> {
     let stack = &cut.stack;
@@ -248,12 +298,10 @@ fn section(
     };
     let baseline = top + 12.0;
     sheet.text([left, baseline], "A – A", bold);
+    let at = |place: f64| format!("{} {}", axis::plain(length.of(place)), length.name);
     let told = match stack.across {
-        Across::X(y) => format!("cut at y = {} mm, true to scale", axis::plain(y * 1e3)),
-        Across::Y(x) => format!(
-            "cut at x = {} mm, along y, true to scale",
-            axis::plain(x * 1e3)
-        ),
+        Across::X(y) => format!("cut at y = {}, true to scale", at(y)),
+        Across::Y(x) => format!("cut at x = {}, along y, true to scale", at(x)),
     };
     sheet.text([left + 40.0, baseline], told, name);
     let base = baseline + 14.0 + above + highest * scale;
@@ -275,7 +323,7 @@ fn section(
     for bolt in &cut.bolts {
         fastener(sheet, &place, bolt);
     }
-    labels(sheet, &place, cut);
+    labels(sheet, &place, (cut, written));
     Ok(base + below + 6.0)
 }
 
@@ -394,10 +442,10 @@ fn fastener(sheet: &mut Sheet, place: &Place, bolt: &CutBolt) {
 }
 
 /// What each plate is, at the right end of the cut, apart from each other.
-fn labels(sheet: &mut Sheet, place: &Place, cut: &JointCut) {
+fn labels(sheet: &mut Sheet, place: &Place, (cut, written): (&JointCut, &[String])) {
     let right = place.x(cut.stack.range[1]);
     let mut free = f64::NEG_INFINITY;
-    for (plate, label) in cut.stack.plates.iter().zip(&cut.labels) {
+    for (plate, label) in cut.stack.plates.iter().zip(written) {
         let end = plate
             .solid
             .iter()

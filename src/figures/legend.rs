@@ -29,6 +29,8 @@ pub(super) enum Sample {
 
 const SAMPLE: f64 = 24.0;
 const ROW: f64 = 17.0;
+/// From a line of a name to its next, points.
+const LINE: f64 = 13.0;
 const TEXT: Lettering = Lettering::plain(LABEL - 1.0, INK, Anchor::Start);
 
 /// Sets the key in rows from the upper left corner of the room; returns its lower edge.
@@ -36,8 +38,12 @@ pub(super) fn legend(sheet: &mut Sheet, room: Frame, items: &[(Sample, String)])
     let mut left = room.left;
     let mut middle = room.top + ROW / 2.0;
     for (sample, name) in items {
-        let name = TEXT.shortened(name, room.width() - SAMPLE - 6.0);
-        let width = SAMPLE + 6.0 + TEXT.width(&name);
+        let lines = TEXT.wrapped(name, room.width() - SAMPLE - 6.0, 2);
+        let widest = lines
+            .iter()
+            .map(|line| TEXT.width(line))
+            .fold(0.0, f64::max);
+        let width = SAMPLE + 6.0 + widest;
         if left > room.left && left + width > room.right {
             left = room.left;
             middle += ROW;
@@ -50,8 +56,16 @@ pub(super) fn legend(sheet: &mut Sheet, room: Frame, items: &[(Sample, String)])
         };
         draw(sheet, place, *sample);
         let at = [left + SAMPLE + 6.0, middle + 0.36 * TEXT.size];
-        sheet.text(at, name, TEXT);
+        for (index, line) in lines.iter().enumerate() {
+            let below = LINE * index as f64;
+            sheet.text([at[0], at[1] + below], line.clone(), TEXT);
+        }
         left += width + 18.0;
+        if lines.len() > 1 {
+            // Nothing stands beside a name of two lines.
+            left = room.right;
+            middle += LINE;
+        }
     }
     if items.is_empty() {
         room.top

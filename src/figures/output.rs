@@ -41,7 +41,7 @@ pub(super) fn svg(sheet: &Sheet) -> Result<String, FigureError> {
     drop(backend);
     let marks = body.split_once('\n').map_or("", |(_, marks)| marks);
     let mut document = format!(
-        "<svg xmlns=\"http://www.w3.org/2000/svg\" width=\"{}\" height=\"{}\" viewBox=\"0 0 {width} {height}\" role=\"img\">\n<title>{}</title>\n<rect width=\"{width}\" height=\"{height}\" fill=\"#FFFFFF\"/>\n",
+        "<svg xmlns=\"http://www.w3.org/2000/svg\" width=\"{}\" height=\"{}\" viewBox=\"0 0 {width} {height}\" role=\"img\" font-family=\"{FAMILY}\">\n<title>{}</title>\n<rect width=\"{width}\" height=\"{height}\" fill=\"#FFFFFF\"/>\n",
         width / FINE,
         height / FINE,
         escaped(&sheet.title),
@@ -58,8 +58,48 @@ pub(super) fn svg(sheet: &Sheet) -> Result<String, FigureError> {
         );
     }
     // Quotes in texts are escaped, so these patterns can only be attributes.
-    document.push_str(&marks.replace(" opacity=\"1\"", "").replace(" \"/>", "\"/>"));
+    let marks = marks
+        .replace(" opacity=\"1\"", "")
+        .replace(" \"/>", "\"/>")
+        .replace(&format!(" font-family=\"{FAMILY}\""), "");
+    document.push_str(&joined(&marks));
     Ok(document)
+}
+
+/// Marks with lines of one stroke that follow each other as one path: dashes are many and short.
+fn joined(marks: &str) -> String {
+    let mut document = String::with_capacity(marks.len());
+    let mut open: Option<&str> = None;
+    for line in marks.split_inclusive('\n') {
+        let stroke = line
+            .strip_prefix("<polyline ")
+            .and_then(|rest| rest.trim_end().strip_suffix("\"/>"))
+            .and_then(|rest| rest.split_once(" points=\""));
+        let (style, points) = match stroke {
+            Some((style, points)) => (Some(style), points),
+            None => (None, ""),
+        };
+        if open != style && open.is_some() {
+            document.push_str("\"/>\n");
+        }
+        match style {
+            None => document.push_str(line),
+            Some(style) => {
+                if open != Some(style) {
+                    document.push_str("<path ");
+                    document.push_str(style);
+                    document.push_str(" d=\"");
+                }
+                document.push('M');
+                document.push_str(points);
+            }
+        }
+        open = style;
+    }
+    if open.is_some() {
+        document.push_str("\"/>\n");
+    }
+    document
 }
 
 /// The sheet as PNG.

@@ -10,8 +10,10 @@ use crate::{
         legend::{corners, legend},
         picture::Picture,
         ramp::Ramp,
+        setting::{Setting, Width},
         sheet::{Colour, GREY, NARROW, Sheet, Stroke},
     },
+    units::{Shown, System},
 };
 
 mod bolts;
@@ -55,10 +57,12 @@ pub struct PlanMap {
     pub values: Vec<f64>,
     /// The quantity, for the colour bar: `contact pressure`.
     pub quantity: String,
-    /// The unit in which it is shown: `MPa`.
+    /// The unit in which it is shown in SI: `MPa`.
     pub unit: String,
-    /// Shown value over SI value.
+    /// Value in that unit over SI value.
     pub factor: f64,
+    /// The highest value of the field itself, SI, which may lie between the cells; none to take theirs.
+    pub peak: Option<f64>,
     /// How values meet colours.
     pub scale: Scale,
     /// The colours.
@@ -81,23 +85,37 @@ impl PlanMap {
     /// A solved field, which knows the gap, brings its own edge of contact.
     pub fn pressure(title: &str, field: &FieldMap) -> Self {
         Self {
-            title: title.into(),
-            window: field.window,
             size: field.size,
             values: field.pressure.clone(),
             quantity: "contact pressure".into(),
             unit: "MPa".into(),
             factor: 1e-6,
+            contact: match field.gap {
+                Some(_) => contour::contact_edge(field),
+                None => Vec::new(),
+            },
+            ..Self::without_field(title, field.window)
+        }
+    }
+
+    /// A plan of a window, m, without a field; its parts are yet to be filled in.
+    pub fn without_field(title: &str, window: [f64; 4]) -> Self {
+        Self {
+            title: title.into(),
+            window,
+            size: [0, 0],
+            values: Vec::new(),
+            quantity: String::new(),
+            unit: String::new(),
+            factor: 1.0,
+            peak: None,
             scale: Scale::Linear,
             ramp: Ramp::Sea,
             outlines: Vec::new(),
             details: Vec::new(),
             bolts: Vec::new(),
             heated: Vec::new(),
-            contact: match field.gap {
-                Some(_) => contour::contact_edge(field),
-                None => Vec::new(),
-            },
+            contact: Vec::new(),
         }
     }
 
@@ -106,7 +124,7 @@ impl PlanMap {
         Self {
             values: field.conductance.clone(),
             quantity: "local conductance".into(),
-            unit: "W/(m²\u{a0}K)".into(),
+            unit: "W/(m²·K)".into(),
             factor: 1.0,
             scale: Scale::Logarithmic,
             ..Self::pressure(title, field)
@@ -123,6 +141,22 @@ impl PlanMap {
             ramp: Ramp::Umber,
             ..Self::pressure(title, field)
         })
+    }
+
+    /// The same map told in a system of units; what is the same in all of them stays.
+    pub(super) fn told_in(&self, units: System) -> Self {
+        let told = [Shown::Pressure, Shown::Gap, Shown::Conductance];
+        let found = told.into_iter().find(|shown| {
+            let si = System::Si.unit(*shown);
+            si.name == self.unit && units.unit(*shown) != si
+        });
+        let mut map = self.clone();
+        if let Some(shown) = found {
+            let unit = units.unit(shown);
+            map.factor *= System::Si.unit(shown).size / unit.size;
+            map.unit = unit.name.into();
+        }
+        map
     }
 
     /// The ground where the field has no value: tinted where paper white is a value itself.
@@ -153,26 +187,32 @@ impl View {
 }
 
 const LARGEST: f64 = 400.0;
-const MARGIN: f64 = 20.0;
 
 /// Draws the map.
-pub(super) fn draw(map: &PlanMap) -> Result<Sheet, FigureError> {
+pub(super) fn draw(map: &PlanMap, setting: Setting) -> Result<Sheet, FigureError> {
+    let map = &map.told_in(setting.units);
+    if setting.width == Width::Narrow {
+        return pair::together(&[map], &subtitle(map), setting);
+    }
+    let margin = setting.width.margin();
     let colours = colour_axis(map)?;
     let window = map.window;
     let [wide, tall] = extent(window)?;
     let points_per_metre = (LARGEST / wide).min(LARGEST / tall);
     let (width, height) = (wide * points_per_metre, tall * points_per_metre);
-    let x_axis = Axis::over(window[0] * 1e3, window[2] * 1e3);
-    let y_axis = Axis::over(window[1] * 1e3, window[3] * 1e3);
+    let length = setting.units.unit(Shown::Length);
+    let [x_axis, y_axis] =
+        [0, 1].map(|k| Axis::over(length.of(window[k]), length.of(window[k + 2])));
+    let [x_title, y_title] = ["x", "y"].map(|name| format!("{name}, {}", length.name));
 
     // The colour bar needs room for its labels and title even beside a narrow strip.
     let area = height.max(170.0);
-    let left = MARGIN + axis::side_room(&y_axis, height);
+    let left = margin + axis::side_room(&y_axis, height);
     let bar_left = left + width.max(30.0) + 26.0;
     let bar_width = 14.0;
-    let right = bar_left + bar_width + axis::side_room(&colours, area) + MARGIN;
+    let right = bar_left + bar_width + axis::side_room(&colours, area) + margin;
     let mut sheet = Sheet::new(right.max(360.0));
-    let top = sheet.header(&map.title, &subtitle(map)) + 8.0;
+    let top = sheet.header(&map.title, &subtitle(map), setting.width) + 8.0;
     let frame = Frame {
         left,
         top: top + (area - height) / 2.0,
@@ -188,8 +228,8 @@ pub(super) fn draw(map: &PlanMap) -> Result<Sheet, FigureError> {
     sheet.pictures.push(raster::picture(map, &view, &colours));
 
     parts::draw(&mut sheet, &view, map);
-    axis::left(&mut sheet, frame, (&y_axis, "y, mm"), Grid::Without);
-    axis::bottom(&mut sheet, frame, (&x_axis, Some("x, mm")));
+    axis::left(&mut sheet, frame, (&y_axis, &y_title), Grid::Without);
+    axis::bottom(&mut sheet, frame, (&x_axis, Some(&x_title)));
 
     let bar = Frame {
         left: bar_left,
@@ -203,9 +243,9 @@ pub(super) fn draw(map: &PlanMap) -> Result<Sheet, FigureError> {
     axis::right(&mut sheet, bar, (&colours, &title));
 
     let room = Frame {
-        left: MARGIN,
+        left: margin,
         top: (frame.bottom + BELOW).max(bar.bottom + 8.0) + 6.0,
-        right: sheet.size[0] - MARGIN,
+        right: sheet.size[0] - margin,
         bottom: f64::INFINITY,
     };
     sheet.size[1] = legend(&mut sheet, room, &parts::key(map, &colours, view.ground)) + 12.0;
@@ -230,6 +270,7 @@ fn subtitle(map: &PlanMap) -> String {
     let highest = map
         .values
         .iter()
+        .chain(&map.peak)
         .fold(f64::NEG_INFINITY, |high, value| high.max(*value));
     format!(
         "{}, at most {} {}",
@@ -255,6 +296,9 @@ fn colour_axis(map: &PlanMap) -> Result<Axis, FigureError> {
     }
     if low > high {
         return Err(FigureError::Empty("the field"));
+    }
+    if let Some(peak) = map.peak {
+        high = high.max(drawable(peak * map.factor, "the field")?);
     }
     Ok(match map.scale {
         Scale::Between(ends) => {

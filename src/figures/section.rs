@@ -14,10 +14,12 @@ use crate::{
         lettering::{Anchor, Lettering},
         picture::Picture,
         ramp::Ramp,
+        setting::{NARROW_SHEET, Setting, Width},
         sheet::{GREY, INK, LABEL, NARROW, Sheet, Stroke},
         warmth::{told, unit},
     },
     resistance::columns::Across,
+    units::Shown,
 };
 
 /// The cut with what is needed to tell it.
@@ -31,7 +33,6 @@ pub struct SectionPlot {
     pub heat: Option<f64>,
 }
 
-const MARGIN: f64 = 20.0;
 /// Width of the cut and of the panel beside it, points.
 const WIDE: f64 = 400.0;
 const BESIDE: f64 = 150.0;
@@ -46,6 +47,7 @@ const BAR: f64 = 9.0;
 const OVER: f64 = 18.0 + BAR + 30.0 + 22.0;
 
 /// The cut on the sheet.
+#[derive(Clone, Copy)]
 struct View {
     frame: Frame,
     /// From where to where along the cut and in height, m.
@@ -70,7 +72,7 @@ impl View {
 }
 
 /// Draws the cut.
-pub(super) fn draw(plot: &SectionPlot) -> Result<Sheet, FigureError> {
+pub(super) fn draw(plot: &SectionPlot, setting: Setting) -> Result<Sheet, FigureError> {
     let section = &plot.section;
     let [along, heights] = extent(section)?;
     let factor = plot.heat.unwrap_or(1.0);
@@ -79,13 +81,22 @@ pub(super) fn draw(plot: &SectionPlot) -> Result<Sheet, FigureError> {
         drawable(low * factor, "the temperatures")?,
         drawable(high * factor, "the temperatures")?,
     );
-    let (width, tall, stretch) = scaled(along, heights[1] - heights[0]);
-
-    let upright = Axis::over(heights[0] * 1e3, heights[1] * 1e3);
-    let left = MARGIN + axis::side_room(&upright, tall);
-    let places = Axis::over(along[0] * 1e3, along[1] * 1e3);
+    let length = setting.units.unit(Shown::Length);
+    let margin = setting.width.margin();
+    let [upright, places] =
+        [heights, along].map(|[from, to]| Axis::over(length.of(from), length.of(to)));
+    // Labels of the uprights are as wide at every height that a cut is drawn.
+    let widest = match setting.width {
+        Width::Full => WIDE,
+        Width::Narrow => NARROW_SHEET - 2.0 * margin - axis::side_room(&upright, LEAST) - 24.0,
+    };
+    let (width, tall, stretch) = scaled(along, heights[1] - heights[0], widest);
+    let left = margin + axis::side_room(&upright, tall);
     let beside = left + width + 0.5 * places.label_width(10).max(24.0) + 22.0;
-    let mut sheet = Sheet::new(beside + BESIDE + MARGIN + 12.0);
+    let mut sheet = Sheet::new(match setting.width {
+        Width::Full => beside + BESIDE + margin + 12.0,
+        Width::Narrow => NARROW_SHEET.max(left + width + margin),
+    });
     let names: Vec<&str> = section
         .plates
         .iter()
@@ -99,7 +110,7 @@ pub(super) fn draw(plot: &SectionPlot) -> Result<Sheet, FigureError> {
         significant(high * factor, 3),
         unit(plot.heat)
     );
-    let top = sheet.header(&plot.title, &range) + 4.0 + OVER;
+    let top = sheet.header(&plot.title, &range, setting.width) + 4.0 + OVER;
     let view = View {
         frame: Frame {
             left,
@@ -114,32 +125,51 @@ pub(super) fn draw(plot: &SectionPlot) -> Result<Sheet, FigureError> {
     };
     bar(&mut sheet, &view, plot.heat);
     cut::draw(&mut sheet, &view, section);
-    axis::left(
-        &mut sheet,
-        view.frame,
-        (&upright, "height, mm"),
-        Grid::Without,
-    );
+    let height = format!("height, {}", length.name);
+    axis::left(&mut sheet, view.frame, (&upright, &height), Grid::Without);
     let (name, other, line) = match section.across {
         Across::X(y) => ("x", "y", y),
         Across::Y(x) => ("y", "x", x),
     };
-    let mut title = format!("{name}, mm, at {other} = {} mm", axis::plain(line * 1e3));
+    let mut title = format!(
+        "{name}, {unit}, at {other} = {} {unit}",
+        axis::plain(length.of(line)),
+        unit = length.name
+    );
     if stretch > 1.0 {
         title = format!("{title}; heights drawn {} ×", axis::plain(stretch));
     }
     axis::bottom(&mut sheet, view.frame, (&places, Some(&title)));
-    let panel = Frame {
-        left: beside,
-        right: beside + BESIDE,
-        ..view.frame
+    let panel = match setting.width {
+        Width::Full => Frame {
+            left: beside,
+            right: beside + BESIDE,
+            ..view.frame
+        },
+        Width::Narrow => {
+            let top = view.frame.bottom + BELOW + 14.0;
+            Frame {
+                top,
+                bottom: top + tall,
+                right: left + widest,
+                ..view.frame
+            }
+        }
     };
     let mut items = cut::key(section);
-    items.extend(through::draw(&mut sheet, (&view, panel), plot)?);
+    let aside = View {
+        frame: panel,
+        ..view
+    };
+    let told = through::draw(&mut sheet, &aside, plot)?;
+    if setting.width == Width::Narrow && !told.is_empty() {
+        axis::left(&mut sheet, panel, (&upright, &height), Grid::Without);
+    }
+    items.extend(told);
     let room = Frame {
-        left: MARGIN,
-        top: view.frame.bottom + BELOW + 6.0,
-        right: sheet.size[0] - MARGIN,
+        left: margin,
+        top: panel.bottom + BELOW + 6.0,
+        right: sheet.size[0] - margin,
         bottom: f64::INFINITY,
     };
     sheet.size[1] = legend(&mut sheet, room, &items) + 12.0;
@@ -208,12 +238,12 @@ fn warmth(section: &StackSection) -> Result<[f64; 2], FigureError> {
 }
 
 /// Width and height of the cut, points, and how much more the heights are drawn than the lengths.
-fn scaled([from, to]: [f64; 2], height: f64) -> (f64, f64, f64) {
+fn scaled([from, to]: [f64; 2], height: f64, wide: f64) -> (f64, f64, f64) {
     const STEPS: [f64; 7] = [1.0, 1.5, 2.0, 3.0, 4.0, 5.0, 8.0];
-    let true_height = WIDE * height / (to - from);
+    let true_height = wide * height / (to - from);
     if true_height > MOST {
         // A tall stack is drawn true and narrow, but not so narrow that its axis has no scale.
-        let width = (WIDE * MOST / true_height).max(120.0);
+        let width = (wide * MOST / true_height).max(120.0);
         return (width, MOST, MOST / height * (to - from) / width);
     }
     let decades = (0..6).flat_map(|decade| STEPS.map(|step| step * 10_f64.powi(decade)));
@@ -221,7 +251,7 @@ fn scaled([from, to]: [f64; 2], height: f64) -> (f64, f64, f64) {
         .into_iter()
         .find(|stretch| stretch * true_height >= LEAST)
         .unwrap_or(1.0);
-    (WIDE, (stretch * true_height).min(MOST), stretch)
+    (wide, (stretch * true_height).min(MOST), stretch)
 }
 
 /// The strokes of the places whose temperatures stand beside the cut.

@@ -5,6 +5,7 @@ use crate::figures::{
     fonts::Weight,
     lettering::{Anchor, Lettering, cleaned},
     picture::Picture,
+    setting::Width,
 };
 
 /// Red, green and blue, sRGB.
@@ -101,23 +102,32 @@ impl Sheet {
     }
 
     /// Title in bold and what is shown below it; returns the height used.
-    pub(super) fn header(&mut self, title: &str, subtitle: &str) -> f64 {
-        const MARGIN: f64 = 20.0;
+    ///
+    /// What is too long for a line takes a second one, on a narrow sheet up to four.
+    pub(super) fn header(&mut self, title: &str, subtitle: &str, width: Width) -> f64 {
+        let margin = width.margin();
         let bold = Lettering {
             weight: Weight::Bold,
             ..Lettering::plain(14.5, INK, Anchor::Start)
         };
         let small = Lettering::plain(LABEL, GREY, Anchor::Start);
-        let room = self.size[0] - 2.0 * MARGIN;
+        let room = self.size[0] - 2.0 * margin;
         let title = cleaned(title);
         self.title = cleaned(&format!("{title}: {subtitle}"));
         let mut baseline = 12.0;
         for line in bold.wrapped(&title, room, 2) {
             baseline += 18.0;
-            self.text([MARGIN, baseline], line, bold);
+            self.text([margin, baseline], line, bold);
         }
-        baseline += 17.0;
-        self.text([MARGIN, baseline], small.shortened(subtitle, room), small);
+        baseline += 2.0;
+        let most = match width {
+            Width::Full => 2,
+            Width::Narrow => 4,
+        };
+        for line in small.wrapped(subtitle, room, most) {
+            baseline += 15.0;
+            self.text([margin, baseline], line, small);
+        }
         baseline + 10.0
     }
 

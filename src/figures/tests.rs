@@ -13,12 +13,15 @@ use crate::{
         PlanOutline, PlanPair, PlanShape, RadiusMark, Ramp, Scale, SectionPlot,
         clip::Frame,
         lettering::{Anchor, Lettering, Turn},
+        narrow_svg_in,
+        setting::{Setting, Width},
         sheet as draw,
         sheet::{Mark, Sheet},
         svg,
     },
     joint::Limit,
     resistance::columns::{Across, Section},
+    units::System,
 };
 
 /// The rectangle a text covers.
@@ -83,6 +86,7 @@ fn plan(window: [f64; 2], factor: f64, scale: Scale, bolts: usize) -> PlanMap {
         quantity: "contact pressure".into(),
         unit: "MPa".into(),
         factor: 1.0,
+        peak: None,
         scale,
         ramp: Ramp::Sea,
         outlines: vec![PlanOutline {
@@ -253,6 +257,17 @@ fn section([wide, tall]: [f64; 2], (size, bolts): (f64, usize), heat: Option<f64
     }
 }
 
+/// Whether the texts of a drawing are clear in two systems of units, on a wide and a narrow sheet.
+fn clear(drawing: &Drawing) -> Result<(), String> {
+    for units in [System::Si, System::Inch] {
+        for width in [Width::Full, Width::Narrow] {
+            let sheet = draw(drawing, Setting { units, width }).map_err(|why| why.to_string())?;
+            texts_are_clear(&sheet).map_err(|why| format!("{units:?} {width:?}: {why}"))?;
+        }
+    }
+    Ok(())
+}
+
 proptest! {
     #![proptest_config(crate::fixed_cases(48))]
 
@@ -266,8 +281,7 @@ proptest! {
     ) {
         let lengths = [10_f64.powf(width), 10_f64.powf(width + aspect)];
         let plot = section(lengths, (10_f64.powf(size), bolts), heated.then_some(22.0));
-        let sheet = draw(&Drawing::Section(Box::new(plot))).unwrap();
-        prop_assert_eq!(texts_are_clear(&sheet), Ok(()));
+        prop_assert_eq!(clear(&Drawing::Section(Box::new(plot))), Ok(()));
     }
 
     #[test]
@@ -290,8 +304,7 @@ proptest! {
             cold: face("panel"),
             heat: Some(22.0),
         };
-        let sheet = draw(&Drawing::Faces(Box::new(pair))).unwrap();
-        prop_assert_eq!(texts_are_clear(&sheet), Ok(()));
+        prop_assert_eq!(clear(&Drawing::Faces(Box::new(pair))), Ok(()));
     }
 
     #[test]
@@ -304,8 +317,7 @@ proptest! {
     ) {
         let window = [10_f64.powf(width), 10_f64.powf(width + aspect)];
         let scale = if logarithmic { Scale::Logarithmic } else { Scale::Linear };
-        let sheet = draw(&Drawing::Plan(Box::new(plan(window, 10_f64.powf(size), scale, bolts)))).unwrap();
-        prop_assert_eq!(texts_are_clear(&sheet), Ok(()));
+        prop_assert_eq!(clear(&Drawing::Plan(Box::new(plan(window, 10_f64.powf(size), scale, bolts)))), Ok(()));
     }
 
     #[test]
@@ -317,8 +329,7 @@ proptest! {
     ) {
         let window = [10_f64.powf(width), 10_f64.powf(width + aspect)];
         let pair = pair(window, 10_f64.powf(size), bolts);
-        let sheet = draw(&Drawing::PressureAndGap(Box::new(pair))).unwrap();
-        prop_assert_eq!(texts_are_clear(&sheet), Ok(()));
+        prop_assert_eq!(clear(&Drawing::PressureAndGap(Box::new(pair))), Ok(()));
     }
 
     #[test]
@@ -329,15 +340,13 @@ proptest! {
         size in -9.0..9.0_f64,
     ) {
         let mut sweep = sweep(stated, largest, required, 10_f64.powf(size));
-        let sheet = draw(&Drawing::Torque(Box::new(sweep.clone())));
-        prop_assert_eq!(texts_are_clear(&sheet.unwrap()), Ok(()));
+        prop_assert_eq!(clear(&Drawing::Torque(Box::new(sweep.clone()))), Ok(()));
         // With a best torque inside the window there is one more label.
         for point in &mut sweep.points {
             point.source_to_sink.nominal *= 1.0 + point.torque;
         }
         sweep.best = Some(stated.min(largest) / 2.0);
-        let sheet = draw(&Drawing::Torque(Box::new(sweep)));
-        prop_assert_eq!(texts_are_clear(&sheet.unwrap()), Ok(()));
+        prop_assert_eq!(clear(&Drawing::Torque(Box::new(sweep))), Ok(()));
     }
 
     #[test]
@@ -361,8 +370,7 @@ proptest! {
                 .map(|radius| RadiusMark { name: "edge of contact".into(), radius: *radius })
                 .collect(),
         };
-        let sheet = draw(&Drawing::Cumulative(plot)).unwrap();
-        prop_assert_eq!(texts_are_clear(&sheet), Ok(()));
+        prop_assert_eq!(clear(&Drawing::Cumulative(plot)), Ok(()));
     }
 }
 
@@ -465,6 +473,7 @@ proptest! {
         for drawing in [Drawing::Plan(Box::new(map)), Drawing::PressureAndGap(Box::new(twice)), Drawing::Cumulative(plot), Drawing::Torque(Box::new(torque)), Drawing::Section(Box::new(cut)), Drawing::Faces(Box::new(faces))] {
             // An error is as good as a figure; only a panic is not.
             let _ = svg(&drawing);
+            let _ = narrow_svg_in(&drawing, System::Inch);
         }
     }
 }

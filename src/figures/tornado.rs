@@ -9,20 +9,20 @@ use crate::{
         legend::{Sample, legend},
         lettering::{Anchor, Lettering},
         ramp,
+        setting::Width,
         sheet::{ACCENT, Colour, FAINT, GREY, INK, LABEL, NARROW, Sheet, Stroke},
     },
     uncertainty::{Ranked, Ranking},
 };
 
-const MARGIN: f64 = 20.0;
 const WIDTH: f64 = 620.0;
 /// Height of a row, of its bar, and of the line inside it.
 const ROW: f64 = 26.0;
 const BAR: f64 = 15.0;
 /// Most inputs that are drawn; the rest moves next to nothing.
 const MOST: usize = 14;
-/// Most room the names may take.
-const NAMES: f64 = 230.0;
+/// Most room the names may take, and on a narrow sheet, where they take two lines.
+const NAMES: [f64; 2] = [230.0, 112.0];
 
 const NOMINAL: Stroke = Stroke::solid(1.2, INK);
 const BAND: Stroke = Stroke::dashed(NARROW, ACCENT, &[5.0, 3.0]);
@@ -38,7 +38,7 @@ struct Bar {
 }
 
 /// Draws the ranking.
-pub(super) fn draw(ranking: &Ranking) -> Result<Sheet, FigureError> {
+pub(super) fn draw(ranking: &Ranking, width: Width) -> Result<Sheet, FigureError> {
     let nominal = drawable(ranking.band.nominal, "the nominal answer")?;
     let bars = bars(ranking)?;
     let band = [ranking.band.low, ranking.band.high]
@@ -60,16 +60,22 @@ pub(super) fn draw(ranking: &Ranking) -> Result<Sheet, FigureError> {
         .iter()
         .map(|bar| NAME.width(bar.name))
         .fold(0.0, f64::max);
-    let left = MARGIN + names.min(NAMES) + 10.0;
-    let right = WIDTH - MARGIN - VALUE.width("100 %") - 10.0;
+    let margin = width.margin();
+    let (most, lines) = match width {
+        Width::Full => (NAMES[0], 1),
+        Width::Narrow => (NAMES[1], 2),
+    };
+    let names = names.min(most);
+    let left = margin + names + 10.0;
+    let right = width.sheet(WIDTH) - margin - VALUE.width("100 %") - 10.0;
 
-    let mut sheet = Sheet::new(WIDTH);
+    let mut sheet = Sheet::new(width.sheet(WIDTH));
     let subtitle = format!(
         "{} when each input alone goes from its 5 % to its 95 %, {} case",
         ranking.target.name(),
         ranking.case
     );
-    let top = sheet.header(&ranking.title, &subtitle) + 22.0;
+    let top = sheet.header(&ranking.title, &subtitle, width) + 22.0;
     let frame = Frame {
         left,
         top,
@@ -88,8 +94,11 @@ pub(super) fn draw(ranking: &Ranking) -> Result<Sheet, FigureError> {
     for (row, bar) in bars.iter().enumerate() {
         let middle = top + 3.0 + ROW * (row as f64 + 0.5);
         draw_bar(&mut sheet, bar, (middle, across(nominal)), &across);
-        let name = NAME.shortened(bar.name, names.min(NAMES));
-        sheet.text([left - 8.0, middle + 0.36 * NAME.size], name, NAME);
+        let name = NAME.wrapped(bar.name, names, lines);
+        let first = middle + 0.36 * NAME.size - 6.0 * (name.len() - 1) as f64;
+        for (line, words) in name.into_iter().enumerate() {
+            sheet.text([left - 8.0, first + 12.0 * line as f64], words, NAME);
+        }
         if bar.total.is_finite() {
             let share = format!("{:.0}\u{a0}%", (100.0 * bar.total).round() + 0.0);
             sheet.text([right + 8.0, middle + 0.36 * VALUE.size], share, VALUE);
@@ -104,9 +113,9 @@ pub(super) fn draw(ranking: &Ranking) -> Result<Sheet, FigureError> {
     let title = format!("{}, {}", ranking.target.name(), ranking.target.unit());
     axis::bottom(&mut sheet, frame, (&axis, Some(&title)));
     let room = Frame {
-        left: MARGIN,
+        left: margin,
         top: frame.bottom + BELOW + 6.0,
-        right: WIDTH - MARGIN,
+        right: width.sheet(WIDTH) - margin,
         bottom: f64::INFINITY,
     };
     sheet.size[1] = legend(&mut sheet, room, &key(&band)) + 12.0;

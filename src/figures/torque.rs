@@ -11,14 +11,15 @@ use crate::{
         legend::{Sample, hatch, hollow_dot, legend},
         lettering::{Anchor, Lettering},
         ramp,
+        setting::{Setting, Width},
         sheet::{ACCENT, Colour, INK, LABEL, NARROW, PAPER, Sheet, Stroke, WIDE},
     },
     joint::Limit,
     report::sweep::worse,
     uncertainty::CONFIDENCE,
+    units::{Shown, Unit},
 };
 
-const MARGIN: f64 = 20.0;
 const WIDTH: f64 = 560.0;
 const UPPER: f64 = 210.0;
 const LOWER: f64 = 140.0;
@@ -33,7 +34,7 @@ const FURTHER: Stroke = Stroke::dashed(0.8, ACCENT, &[2.0, 2.0]);
 const WINDOW: Colour = Colour(0x3F, 0x8F, 0x5B);
 const BAR: f64 = 6.0;
 
-/// One torque with a band, shown unit.
+/// One torque, N m, with a band.
 #[derive(Clone, Copy)]
 struct Point {
     torque: f64,
@@ -43,7 +44,7 @@ struct Point {
 }
 
 /// Draws the sweep.
-pub(super) fn draw(sweep: &TorqueSweep) -> Result<Sheet, FigureError> {
+pub(super) fn draw(sweep: &TorqueSweep, setting: Setting) -> Result<Sheet, FigureError> {
     let upper_points = with_minimum(sweep, &band(sweep, |point| point.source_to_sink)?)?;
     let lower_points = band(sweep, |point| point.contact)?;
     let stated = drawable(sweep.stated, "the stated torque")?;
@@ -52,9 +53,11 @@ pub(super) fn draw(sweep: &TorqueSweep) -> Result<Sheet, FigureError> {
         None => None,
     };
     let torques = || upper_points.iter().map(|p| p.torque).chain([stated]);
+    let lever = setting.units.unit(Shown::Torque);
+    let (margin, width) = (setting.width.margin(), setting.width.sheet(WIDTH));
     let x_axis = Axis::over(
-        torques().fold(f64::INFINITY, f64::min),
-        torques().fold(f64::NEG_INFINITY, f64::max),
+        lever.of(torques().fold(f64::INFINITY, f64::min)),
+        lever.of(torques().fold(f64::NEG_INFINITY, f64::max)),
     );
     let required = match sweep.required {
         Some((limit, bound)) => Some((drawable(limit, "the requirement")?, bound)),
@@ -69,21 +72,23 @@ pub(super) fn draw(sweep: &TorqueSweep) -> Result<Sheet, FigureError> {
         lines.iter().map(width).fold(0.0, f64::max) + 8.0
     });
     let left =
-        MARGIN + axis::side_room(&upper_axis, UPPER).max(axis::side_room(&lower_axis, LOWER));
-    let right = WIDTH - MARGIN - beside;
-    let across = |torque: f64| left + x_axis.place(torque) * (right - left);
+        margin + axis::side_room(&upper_axis, UPPER).max(axis::side_room(&lower_axis, LOWER));
+    let right = width - margin - beside;
+    let across = |torque: f64| left + x_axis.place(lever.of(torque)) * (right - left);
 
+    let high = required.is_some_and(|(limit, _)| upper_axis.place(limit) > 0.85);
     let flags = Flags::arranged(
-        torque_flags(sweep, &x_axis, &across)?,
-        // Not over the numbers of the upright axis, whose topmost stands as high as a label.
-        [left, WIDTH - MARGIN],
+        torque_flags(sweep, (&x_axis, lever, setting.width), &across)?,
+        // Not over the numbers of the upright axis, whose topmost stands as high as a label, nor
+        // over the note of a requirement that lies as high.
+        [left, if high { right } else { width - margin }],
     );
-    let mut sheet = Sheet::new(WIDTH);
+    let mut sheet = Sheet::new(width);
     let subtitle = format!(
         "resistance against the torque of {}, {} case",
         sweep.group, sweep.case
     );
-    let top = sheet.header(&sweep.title, &subtitle) + flags.height() + 8.0;
+    let top = sheet.header(&sweep.title, &subtitle, setting.width) + flags.height() + 8.0;
     let upper = Frame {
         left,
         top,
@@ -132,7 +137,8 @@ pub(super) fn draw(sweep: &TorqueSweep) -> Result<Sheet, FigureError> {
         Grid::Faint,
     );
     axis::bottom(&mut sheet, upper, (&x_axis, None));
-    axis::bottom(&mut sheet, lower, (&x_axis, Some("torque, N\u{a0}m")));
+    let title = format!("torque, {}", lever.name);
+    axis::bottom(&mut sheet, lower, (&x_axis, Some(&title)));
 
     let at = |frame: Frame, axis: &Axis, point: Point, value: f64| {
         [
@@ -168,7 +174,7 @@ pub(super) fn draw(sweep: &TorqueSweep) -> Result<Sheet, FigureError> {
             sheet.disc(*only, 3.0, nominal().colour);
         }
     }
-    if let Some(bar) = window_bar(sweep, (&x_axis, upper), &across) {
+    if let Some(bar) = window_bar(sweep, upper, &across) {
         sheet.area(bar, WINDOW);
     }
     if let Some(best) = best
@@ -184,9 +190,9 @@ pub(super) fn draw(sweep: &TorqueSweep) -> Result<Sheet, FigureError> {
     }
 
     let room = Frame {
-        left: MARGIN,
+        left: margin,
         top: lower.bottom + BELOW + 6.0,
-        right: WIDTH - MARGIN,
+        right: width - margin,
         bottom: f64::INFINITY,
     };
     sheet.size[1] = legend(
@@ -198,6 +204,7 @@ pub(super) fn draw(sweep: &TorqueSweep) -> Result<Sheet, FigureError> {
                 barred.is_some_and(|from| from < right),
                 parted.is_some_and(|to| to > left),
             ],
+            lever,
         ),
     ) + 12.0;
     Ok(sheet)
@@ -206,12 +213,12 @@ pub(super) fn draw(sweep: &TorqueSweep) -> Result<Sheet, FigureError> {
 /// The bar along the foot of the frame over the torques that heat and strength allow.
 fn window_bar(
     sweep: &TorqueSweep,
-    (x_axis, frame): (&Axis, Frame),
+    frame: Frame,
     across: &impl Fn(f64) -> f64,
 ) -> Option<Vec<[f64; 2]>> {
     let both = sweep.window.both?;
-    let [low, high] = [both.low, both.high].map(|end| end.torque.clamp(x_axis.low, x_axis.high));
-    let [from, to] = [low, high].map(across);
+    let at = |torque: f64| across(torque).clamp(frame.left, frame.right);
+    let [from, to] = [both.low, both.high].map(|end| at(end.torque));
     let [top, foot] = [frame.bottom - BAR, frame.bottom];
     let bar = [[from, top], [to, top], [to, foot], [from, foot]];
     (from < to).then(|| frame.area(&bar))
@@ -310,7 +317,7 @@ fn resistance_axis(low: f64, high: f64) -> Axis {
 /// Labels of the stated and the best torque, the knee and every limit within the axis.
 fn torque_flags(
     sweep: &TorqueSweep,
-    x_axis: &Axis,
+    (x_axis, lever, width): (&Axis, Unit, Width),
     across: &impl Fn(f64) -> f64,
 ) -> Result<Vec<Flag>, FigureError> {
     let flag = |torque: f64, text: String, stroke: Stroke| Flag {
@@ -318,8 +325,8 @@ fn torque_flags(
         text,
         stroke,
     };
-    let drawn = |torque: f64| (x_axis.low..=x_axis.high).contains(&torque);
-    let number = |torque: f64| format!("{} N\u{a0}m", axis::plain(torque));
+    let drawn = |torque: f64| (x_axis.low..=x_axis.high).contains(&lever.of(torque));
+    let number = |torque: f64| told(torque, lever);
     let mut flags = vec![flag(
         sweep.stated,
         format!("stated {}", number(sweep.stated)),
@@ -328,7 +335,10 @@ fn torque_flags(
     if let Some((largest, limit)) = sweep.largest {
         let largest = drawable(largest, "the largest torque")?;
         if drawn(largest) {
-            let text = format!("largest {}: {limit}", number(largest));
+            let text = match width {
+                Width::Full => format!("largest {}: {limit}", number(largest)),
+                Width::Narrow => format!("largest {}", number(largest)),
+            };
             flags.push(flag(largest, text, LARGEST));
         }
     }
@@ -339,11 +349,11 @@ fn torque_flags(
             width: 0.8,
             ..nominal()
         };
-        flags.push(flag(
-            best,
-            format!("best {}, worse beyond", number(best)),
-            stroke,
-        ));
+        let text = match width {
+            Width::Full => format!("best {}, worse beyond", number(best)),
+            Width::Narrow => format!("best {}", number(best)),
+        };
+        flags.push(flag(best, text, stroke));
     }
     if let Some(knee) = sweep.window.knee {
         let knee = drawable(knee, "the knee")?;
@@ -449,7 +459,12 @@ fn best_name(sweep: &TorqueSweep) -> &'static str {
     }
 }
 
-fn key(sweep: &TorqueSweep, [barred, parted]: [bool; 2]) -> Vec<(Sample, String)> {
+/// A torque with its unit.
+fn told(torque: f64, lever: Unit) -> String {
+    format!("{} {}", axis::plain(lever.of(torque)), lever.name)
+}
+
+fn key(sweep: &TorqueSweep, [barred, parted]: [bool; 2], lever: Unit) -> Vec<(Sample, String)> {
     let banded = sweep.points.iter().any(|p| p.source_to_sink.high.is_some());
     let mut items = vec![if banded {
         (
@@ -462,7 +477,7 @@ fn key(sweep: &TorqueSweep, [barred, parted]: [bool; 2]) -> Vec<(Sample, String)
     if let Some(best) = sweep.best {
         items.push((
             Sample::HollowDot(nominal().colour),
-            format!("{}, at {} N\u{a0}m", best_name(sweep), axis::plain(best)),
+            format!("{}, at {}", best_name(sweep), told(best, lever)),
         ));
     }
     match (barred, parted) {

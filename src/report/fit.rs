@@ -12,7 +12,7 @@ use crate::{
         table::{Side, aligned},
         text::{self, Detail},
     },
-    units::{Quantity, show},
+    units::{Quantity, Shown, System, show},
 };
 use serde_json::{Value, json};
 use std::fmt::Write;
@@ -24,12 +24,16 @@ const ROWS: usize = 5;
 const WIDTH: usize = 96;
 
 /// The unit in which a quantity stands in tables and figures, and its size in SI.
-pub fn unit(quantity: Quantity) -> (&'static str, f64) {
-    match quantity {
-        Quantity::Pressure => ("MPa", 1e6),
-        Quantity::Force => ("kN", 1e3),
-        other => (other.unit(), 1.0),
-    }
+pub fn unit(quantity: Quantity, units: System) -> (&'static str, f64) {
+    let shown = match quantity {
+        Quantity::Pressure => Shown::Pressure,
+        Quantity::Force => Shown::Force,
+        Quantity::Torque => Shown::Torque,
+        Quantity::FilmCoefficient => Shown::Conductance,
+        other => return (other.unit(), 1.0),
+    };
+    let unit = units.unit(shown);
+    (unit.name, unit.size)
 }
 
 /// What was fitted, as people say it.
@@ -55,8 +59,13 @@ fn sign(abscissa: Abscissa) -> &'static str {
     }
 }
 
-/// A fitted series for the terminal; the block is printed apart.
+/// A fitted series for the terminal in SI; the block is printed apart.
 pub fn series(series: &Series, name: &str) -> String {
+    series_in(series, name, System::Si)
+}
+
+/// The same in a system of units.
+pub fn series_in(series: &Series, name: &str, units: System) -> String {
     let mut text = format!(
         "{}: {} against {}\n",
         plain(name),
@@ -65,14 +74,18 @@ pub fn series(series: &Series, name: &str) -> String {
     );
     for branch in &series.branches {
         text.push('\n');
-        text.push_str(&self::branch(series, branch));
+        text.push_str(&self::branch((series, units), branch));
     }
     if let Some(found) = series.hysteresis {
-        let _ = writeln!(text, "\n{}", hysteresis(&found, series.abscissa));
+        let _ = writeln!(
+            text,
+            "\n{}",
+            units.restated(&hysteresis(&found, series.abscissa))
+        );
     }
     let told = text::cautions(&series.cautions, Detail::Full);
     if !told.is_empty() {
-        let _ = write!(text, "\n{told}");
+        let _ = write!(text, "\n{}", units.restated(&told));
     }
     text
 }
@@ -88,9 +101,9 @@ fn hysteresis(found: &Hysteresis, abscissa: Abscissa) -> String {
     )
 }
 
-fn branch(series: &Series, branch: &Branch) -> String {
+fn branch((series, units): (&Series, System), branch: &Branch) -> String {
     let [low, high] = branch.range();
-    let x = |value: f64| show(value, series.abscissa.quantity());
+    let x = |value: f64| units.restated(&show(value, series.abscissa.quantity()));
     let named = branch.direction.map_or("all", |way| way.name());
     let mut text = format!(
         "{named}: {} readings from {} to {}\n",
@@ -99,14 +112,14 @@ fn branch(series: &Series, branch: &Branch) -> String {
         x(high)
     );
     match &branch.shape {
-        Shape::Law(law) => text.push_str(&self::law(series, law)),
+        Shape::Law(law) => text.push_str(&self::law((series, units), law)),
         Shape::Table(table) => {
-            let (x_unit, x_size) = unit(series.abscissa.quantity());
-            let y_unit = series.ordinate.fitted().unit();
+            let (x_unit, x_size) = unit(series.abscissa.quantity(), units);
+            let (y_unit, y_size) = unit(series.ordinate.fitted(), units);
             let rows: Vec<Vec<String>> = table
                 .rows
                 .iter()
-                .map(|(x, y)| vec![four(x / x_size), four(*y)])
+                .map(|(x, y)| vec![four(x / x_size), four(y / y_size)])
                 .collect();
             text.push_str(&aligned(
                 &[
@@ -128,17 +141,18 @@ fn branch(series: &Series, branch: &Branch) -> String {
     text
 }
 
-fn law(series: &Series, law: &PowerLaw) -> String {
+fn law((series, units): (&Series, System), law: &PowerLaw) -> String {
     let quantity = series.ordinate.fitted();
+    let (y_unit, y_size) = unit(quantity, units);
     let between = |low: f64, high: f64| format!("({} to {}, 90 %)", four(low), four(high));
     let slope = law.reach * law.covariance[1][1].sqrt();
     let [low, high] = law.band(law.reference);
     let mut text = format!(
         "  {} = {} ({} / {})^{:.3}\n",
         fitted(series.ordinate),
-        show(law.coefficient, quantity),
+        units.restated(&show(law.coefficient, quantity)),
         sign(series.abscissa),
-        show(law.reference, series.abscissa.quantity()),
+        units.restated(&show(law.reference, series.abscissa.quantity())),
         law.exponent,
     );
     let _ = writeln!(
@@ -146,9 +160,9 @@ fn law(series: &Series, law: &PowerLaw) -> String {
         "  exponent        {} {}\n  coefficient     {} {} {}\n  scatter factor  {} (one standard deviation; one reading about the law {})",
         four(law.exponent),
         between(law.exponent - slope, law.exponent + slope),
-        four(law.coefficient),
-        quantity.unit(),
-        between(low, high),
+        four(law.coefficient / y_size),
+        y_unit,
+        between(low / y_size, high / y_size),
         four(law.factor()),
         four(law.scatter.exp()),
     );
@@ -177,28 +191,26 @@ fn law(series: &Series, law: &PowerLaw) -> String {
             );
         }
     }
-    text.push_str(&bands(series, law));
+    text.push_str(&bands((series, units), law));
     text
 }
 
 /// The law over its range with both bands.
-fn bands(series: &Series, law: &PowerLaw) -> String {
-    let (x_unit, x_size) = unit(series.abscissa.quantity());
+fn bands((series, units): (&Series, System), law: &PowerLaw) -> String {
+    let (x_unit, x_size) = unit(series.abscissa.quantity(), units);
+    let (y_unit, y_size) = unit(series.ordinate.fitted(), units);
     let [from, to] = law.range;
     let rows: Vec<Vec<String>> = (0..ROWS)
         .map(|row| from * (to / from).powf(row as f64 / (ROWS - 1) as f64))
         .map(|x| {
             let ([low, high], [least, most]) = (law.band(x), law.prediction(x));
-            [x / x_size, low, law.at(x), high, least, most]
-                .map(four)
-                .to_vec()
+            let values = [low, law.at(x), high, least, most].map(|value| four(value / y_size));
+            let mut cells = vec![four(x / x_size)];
+            cells.extend(values);
+            cells
         })
         .collect();
-    let y = format!(
-        "{} {}",
-        fitted(series.ordinate),
-        series.ordinate.fitted().unit()
-    );
+    let y = format!("{} {y_unit}", fitted(series.ordinate));
     let right = Side::Right;
     aligned(
         &[

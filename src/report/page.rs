@@ -31,6 +31,8 @@ use table::Table;
 pub struct Figure {
     /// One `<svg>` element, its texts escaped.
     pub svg: String,
+    /// The same for a narrow screen, with letters as large.
+    pub narrow: String,
     /// What it shows, in a sentence.
     pub caption: String,
     /// Whether its pictures are maps over the plan, whose values are read under the pointer.
@@ -99,7 +101,7 @@ pub struct Contents<'a> {
     pub ranking: Option<&'a Ranking>,
     /// The variants of the file; none where it has none.
     pub comparison: Option<&'a Comparison>,
-    /// Units of tables and sentences; drawings, and values under the pointer, are in SI.
+    /// Units of tables, sentences and values under the pointer; drawings are told in them already.
     pub units: System,
     /// What could not be computed, and why, a sentence each.
     pub left_out: &'a [String],
@@ -130,9 +132,9 @@ struct Page<'a> {
     media: Option<Table>,
     medium: String,
     values: Option<String>,
+    pointed: String,
     torque: Option<Torque>,
     lever: &'static str,
-    drawn_in_si: bool,
     drivers: Option<Table>,
     comparison: Option<Table>,
     cautions: Vec<Told>,
@@ -163,10 +165,13 @@ pub fn page(contents: &Contents) -> Result<String, String> {
         cases: results::cases(estimate),
         media: (!contents.media.is_empty()).then(|| results::media(contents.media, name)),
         medium: contents.joint.service.medium.word(),
-        values: contents.fields.as_ref().map(values::script),
+        values: contents
+            .fields
+            .as_ref()
+            .map(|fields| values::script(fields, contents.units)),
+        pointed: pointed(contents.joint),
         torque: contents.torque.map(answers::torque),
         lever: contents.units.unit(Shown::Torque).name,
-        drawn_in_si: contents.units != System::Si,
         drivers: (!drivers.rows.is_empty()).then_some(drivers),
         comparison: contents.comparison.map(answers::comparison),
         cautions: answers::cautions(&estimate.cautions),
@@ -177,6 +182,17 @@ pub fn page(contents: &Contents) -> Result<String, String> {
     };
     page.restate(contents.units);
     page.render().map_err(|found| found.to_string())
+}
+
+/// Which maps are read under the pointer.
+fn pointed(joint: &Joint) -> String {
+    match joint.interfaces() {
+        0 | 1 => "Point at a map to read its values.".to_owned(),
+        _ => format!(
+            "Point at a map of {} to read its values.",
+            joint.interface_name(0)
+        ),
+    }
 }
 
 /// The title block, as drawings have one.

@@ -30,6 +30,8 @@ pub enum Shown {
     GasPressure,
     /// Length along a plate.
     Length,
+    /// Gap between faces.
+    Gap,
     /// Area of a ring.
     Area,
     /// Local conductance.
@@ -47,6 +49,13 @@ pub struct Unit {
     pub name: &'static str,
     /// One of it in SI.
     pub size: f64,
+}
+
+impl Unit {
+    /// A value in SI as a number of this unit.
+    pub fn of(self, value: f64) -> f64 {
+        value / self.size
+    }
 }
 
 /// Torque from which a foot is the lever people speak of, N m: 20 ft·lbf.
@@ -95,6 +104,7 @@ impl System {
             (Self::Si | Self::Shop, Shown::Force) => ("kN", 1e3),
             (Self::Si | Self::Shop, Shown::Torque) => ("N·m", 1.0),
             (Self::Si | Self::Shop, Shown::Length) => ("mm", 1e-3),
+            (Self::Si | Self::Shop, Shown::Gap) => ("µm", 1e-6),
             (Self::Si | Self::Shop, Shown::Area) => ("mm²", 1e-6),
             (Self::Si | Self::Shop, Shown::Conductance) => ("W/(m²·K)", 1.0),
             (Self::Si | Self::Shop, Shown::SmallMass) => ("g", 1e-3),
@@ -103,6 +113,7 @@ impl System {
             (Self::Inch, Shown::Torque) => ("in·lbf", symbols::INCH_POUND),
             (Self::Inch, Shown::Pressure | Shown::GasPressure) => ("psi", symbols::PSI),
             (Self::Inch, Shown::Length) => ("in", symbols::INCH),
+            (Self::Inch, Shown::Gap) => ("mil", 1e3 * symbols::MICROINCH),
             (Self::Inch, Shown::Area) => ("in²", symbols::INCH * symbols::INCH),
             (Self::Inch, Shown::Conductance) => ("Btu/(h·ft²·°F)", symbols::BTU_PER_FOOT),
             (Self::Inch, Shown::SmallMass | Shown::Mass) => ("lb", symbols::POUND),
@@ -229,7 +240,9 @@ impl System {
             }
             for (&(start, end), value) in group.iter().zip(&values).rev() {
                 let places = decimals(&told[start..end]);
-                told.replace_range(start..end, &format!("{:.places$}", 1.8 * value + 32.0));
+                let new = format!("{:.places$}", 1.8 * value + 32.0);
+                let new = signed(new, &told[start..end]);
+                told.replace_range(start..end, &new);
             }
             return Some("°F");
         }
@@ -239,8 +252,10 @@ impl System {
             let factor = size / unit.size;
             // A change of name alone changes no digit.
             if (factor - 1.0).abs() > 1e-12 {
-                let kept = significant(value * factor, last_place(&told[start..end]) * factor);
-                told.replace_range(start..end, &rounded(value * factor, kept));
+                let written = &told[start..end];
+                let kept = significant(value * factor, last_place(written) * factor);
+                let new = signed(rounded(value * factor, kept), written);
+                told.replace_range(start..end, &new);
             }
         }
         Some(unit.name)
@@ -289,6 +304,14 @@ fn stands(text: &str, symbol: &str) -> bool {
             !(next.is_alphanumeric() || matches!(next, '/' | '·' | '²' | '³' | '(' | '^'))
         })
     })
+}
+
+/// A number with the minus that stood before it.
+fn signed(new: String, written: &str) -> String {
+    match new.strip_prefix('-') {
+        Some(size) if written.starts_with('−') => format!("−{size}"),
+        _ => new,
+    }
 }
 
 /// Decimals of a written number.
@@ -345,6 +368,7 @@ mod tests {
             (Shown::Pressure, "psi", 6894.757),
             (Shown::GasPressure, "psi", 6894.757),
             (Shown::Length, "in", 0.0254),
+            (Shown::Gap, "mil", 2.54e-5),
             (Shown::Area, "in²", 6.4516e-4),
             (Shown::Conductance, "Btu/(h·ft²·°F)", 5.678263),
             (Shown::SmallMass, "lb", 0.4535924),
@@ -393,7 +417,9 @@ mod tests {
             ("2700 kg/m³", "0.0975 lb/in³"),
             ("x 25.4, y 50.8 mm of box", "x 1.00, y 2.00 in of box"),
             ("sink at 20.0 °C", "sink at 68.0 °F"),
-            ("sink at −40 °C", "sink at -40 °F"),
+            ("sink at −20.0 °C", "sink at −4.0 °F"),
+            ("a face at −25.40 mm", "a face at −1.000 in"),
+            ("sink at −40 °C", "sink at −40 °F"),
             ("line ends 25.4\n  mm of", "line ends 1.00\n  in of"),
         ] {
             assert_eq!(System::Inch.restated(metric), inch);

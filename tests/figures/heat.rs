@@ -189,11 +189,8 @@ fn a_minimum_between_swept_torques_is_marked_where_it_lies() {
         added_by_joint: 0.01,
     });
     let texts = texts(&svg(&Drawing::Torque(Box::new(swept))).unwrap());
-    assert!(holds(&texts, "minimum, at 1.6 N\u{a0}m"), "{texts:?}");
-    assert!(
-        holds(&texts, "best 1.6 N\u{a0}m, worse beyond"),
-        "{texts:?}"
-    );
+    assert!(holds(&texts, "minimum, at 1.6 N·m"), "{texts:?}");
+    assert!(holds(&texts, "best 1.6 N·m, worse beyond"), "{texts:?}");
 }
 
 #[test]
@@ -202,6 +199,6 @@ fn a_joint_that_is_to_resist_is_marked_where_it_resists_most() {
     mount.best = Some(0.25);
     mount.required = Some((0.8, Limit::Least));
     let texts = texts(&svg(&Drawing::Torque(Box::new(mount))).unwrap());
-    let named = "highest that strength allows, at 0.25 N\u{a0}m";
+    let named = "highest that strength allows, at 0.25 N·m";
     assert!(holds(&texts, named), "{texts:?}");
 }

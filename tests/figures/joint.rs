@@ -4,7 +4,7 @@ use ringsum::{
     estimate::{StackOutline, stack_outline},
     figures::{
         CutBolt, CutEnd, CutHead, Drawing, EvidenceAxis, EvidencePanel, EvidencePlot, EvidenceRow,
-        FigureError, JointCut, JointPlot, PlanMap, Ramp, Scale, svg,
+        FigureError, JointCut, JointPlot, PlanMap, svg,
     },
     joint::{self, Joint},
 };
@@ -69,22 +69,7 @@ fn feet_and_ribs_stand_where_they_belong() {
 fn plot(stack: StackOutline) -> JointPlot {
     JointPlot {
         told: "two plates".to_owned(),
-        plan: PlanMap {
-            title: "Lid & box".to_owned(),
-            window: [-0.02, -0.02, 0.18, 0.13],
-            size: [0, 0],
-            values: Vec::new(),
-            quantity: String::new(),
-            unit: String::new(),
-            factor: 1.0,
-            scale: Scale::Linear,
-            ramp: Ramp::Sea,
-            outlines: Vec::new(),
-            details: Vec::new(),
-            bolts: Vec::new(),
-            heated: Vec::new(),
-            contact: Vec::new(),
-        },
+        plan: PlanMap::without_field("Lid & box", [-0.02, -0.02, 0.18, 0.13]),
         cut: Some(JointCut {
             labels: vec!["base <1>".to_owned(), "panel".to_owned()],
             bolts: stack

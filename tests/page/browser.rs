@@ -152,6 +152,36 @@ fn a_page_keeps_within_screens_and_paper() {
     assert!((4..40).contains(&pages), "{pages} pages");
 }
 
+/// Figures that are shown: how far each must be scrolled, and the size of its smallest letters, pixels.
+const LETTERS: &str = r"
+  return [...document.querySelectorAll('figure svg')].filter((svg) => svg.checkVisibility()).map((svg) => {
+    const sheet = svg.closest('.sheet'), scale = svg.getBoundingClientRect().width / svg.viewBox.baseVal.width;
+    const sizes = [...svg.querySelectorAll('text')].map((text) => Number(text.getAttribute('font-size')) * scale);
+    return [sheet.scrollWidth - sheet.clientWidth, Math.min(...sizes), svg.querySelector('title').textContent]; });";
+
+#[test]
+fn figures_fit_every_screen_with_letters_that_can_be_read() {
+    let made = made();
+    let Some(browser) = Browser::start() else {
+        return;
+    };
+    browser.open(&made.page);
+    let mut counts = Vec::new();
+    for width in [360, 800, 820, 1200] {
+        browser.width(width);
+        let found = browser.run(LETTERS);
+        let found = found.as_array().expect("figures");
+        counts.push(found.len());
+        for figure in found {
+            assert_eq!(figure[0], json!(0), "{width}: {figure} must be scrolled");
+            let letters = figure[1].as_f64().expect("a size");
+            assert!(letters >= 9.0, "{width}: {figure}");
+        }
+    }
+    counts.dedup();
+    assert!(counts.len() == 1 && counts[0] >= 7, "{counts:?} figures");
+}
+
 #[test]
 fn texts_of_a_page_stand_out_and_every_figure_is_named() {
     let made = made();

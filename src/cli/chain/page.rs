@@ -41,6 +41,8 @@ pub struct Asked {
 pub struct Handed {
     /// Results with their bands, and the fields for the drawings.
     pub fields: Fields,
+    /// The fields of the interfaces of a stack after the first.
+    pub further: Vec<Fields>,
     /// The fields for the pointer.
     pub pointed: Pointed,
     /// Resistance against torque; none where no group is tightened by torque.
@@ -76,20 +78,28 @@ pub fn handed(task: &Task, versions: &[Entry], asked: &Asked) -> Result<Handed, 
     let chain = task.chain()?;
     let along = || {
         let estimate = uncertainty::along(&chain, &asked.options)?;
+        let mapped = |interface: usize| {
+            Ok::<Fields, Failure>(Fields {
+                map: estimate::field_map(&chain, interface, asked.columns)?,
+                interface,
+                rings: estimate::ring_tables(&chain, interface)?,
+                heat: estimate::heat_map(&chain, interface, asked.columns)?,
+                section: None,
+                nominal: estimate.clone(),
+            })
+        };
+        let further = (1..chain.joint().interfaces()).map(mapped);
         Ok(Handed {
             media: media(&chain, &estimate)?,
             ranking: ranking(&chain, &asked.options)?,
+            further: further.collect::<Result<Vec<Fields>, Failure>>()?,
             pointed: Pointed {
                 map: estimate::field_map(&chain, 0, asked.pointed)?,
                 heat: estimate::heat_map(&chain, 0, asked.pointed)?,
             },
             fields: Fields {
-                map: estimate::field_map(&chain, 0, asked.columns)?,
-                interface: 0,
-                rings: estimate::ring_tables(&chain, 0)?,
-                heat: estimate::heat_map(&chain, 0, asked.columns)?,
                 section: estimate::stack_section(&chain)?,
-                nominal: estimate,
+                ..mapped(0)?
             },
             torque: None,
             comparison: None,

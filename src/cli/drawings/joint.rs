@@ -3,7 +3,7 @@
 use crate::{
     cli::drawings::{details, heated, outline},
     estimate::{OutlinePlate, StackOutline, stack_outline},
-    figures::{CutBolt, CutEnd, CutHead, JointCut, JointPlot, PlanBolt, PlanMap, Ramp, Scale},
+    figures::{CutBolt, CutEnd, CutHead, JointCut, JointPlot, PlanBolt, PlanMap},
     joint::{Engagement, Fastener, Joint, Plate},
     report::number::brief,
 };
@@ -20,15 +20,6 @@ pub fn plan_and_cut(joint: &Joint) -> JointPlot {
         ]
     });
     let plan = PlanMap {
-        title: joint.title.clone(),
-        window: window.unwrap_or([0.0; 4]),
-        size: [0, 0],
-        values: Vec::new(),
-        quantity: String::new(),
-        unit: String::new(),
-        factor: 1.0,
-        scale: Scale::Linear,
-        ramp: Ramp::Sea,
         outlines: joint.plates.iter().map(outline).collect(),
         details: joint.plates.iter().flat_map(details).collect(),
         bolts: joint
@@ -46,7 +37,7 @@ pub fn plan_and_cut(joint: &Joint) -> JointPlot {
             .into_iter()
             .filter_map(|(zone, _)| heated(zone))
             .collect(),
-        contact: Vec::new(),
+        ..PlanMap::without_field(&joint.title, window.unwrap_or([0.0; 4]))
     };
     JointPlot {
         told: told(joint),

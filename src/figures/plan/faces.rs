@@ -6,8 +6,9 @@ use crate::{
         FigureError,
         axis::significant,
         drawable,
-        plan::{PlanMap, Scale, pair::twins},
+        plan::{PlanMap, Scale, pair::together},
         ramp::Ramp,
+        setting::Setting,
         sheet::Sheet,
         warmth::{told, unit},
     },
@@ -86,7 +87,7 @@ impl PlanMap {
 }
 
 /// Draws the pair.
-pub(in crate::figures) fn draw(pair: &FacePair) -> Result<Sheet, FigureError> {
+pub(in crate::figures) fn draw(pair: &FacePair, setting: Setting) -> Result<Sheet, FigureError> {
     let maps = [&pair.warm, &pair.cold];
     let range = match pair.warm.scale {
         Scale::Between(ends) => {
@@ -100,5 +101,5 @@ pub(in crate::figures) fn draw(pair: &FacePair) -> Result<Sheet, FigureError> {
         }
         _ => String::new(),
     };
-    twins(maps, &format!("{}{range}", told(pair.heat)))
+    together(&maps, &format!("{}{range}", told(pair.heat)), setting)
 }

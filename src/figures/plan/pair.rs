@@ -9,9 +9,11 @@ use crate::{
         legend::{Sample, corners, legend},
         lettering::{Anchor, Lettering},
         picture::Picture,
-        plan::{MARGIN, PlanMap, View, colour_axis, extent, parts, raster, subtitle},
+        plan::{PlanMap, View, colour_axis, extent, parts, raster, subtitle},
+        setting::{NARROW_SHEET, Setting, Width},
         sheet::{GREY, INK, LABEL, NARROW, Sheet, Stroke},
     },
+    units::Shown,
 };
 
 /// Pressure and gap of one joint on the same window.
@@ -65,30 +67,44 @@ enum Arrangement {
 }
 
 /// Draws the pair.
-pub(in crate::figures) fn draw(pair: &PlanPair) -> Result<Sheet, FigureError> {
-    let maps = [&pair.pressure, &pair.gap];
-    let told = format!("{}; {}", subtitle(maps[0]), subtitle(maps[1]));
-    twins(maps, &told)
+pub(in crate::figures) fn draw(pair: &PlanPair, setting: Setting) -> Result<Sheet, FigureError> {
+    let maps = [&pair.pressure, &pair.gap].map(|map| map.told_in(setting.units));
+    let told = format!("{}; {}", subtitle(&maps[0]), subtitle(&maps[1]));
+    together(&[&maps[0], &maps[1]], &told, setting)
 }
 
-/// Draws two maps of one window with what is told under the title of the first.
-pub(super) fn twins(maps: [&PlanMap; 2], told: &str) -> Result<Sheet, FigureError> {
+/// Draws maps of one window with what is told under the title of the first.
+pub(super) fn together(
+    maps: &[&PlanMap],
+    told: &str,
+    setting: Setting,
+) -> Result<Sheet, FigureError> {
+    let margin = setting.width.margin();
     let window = maps[0].window;
     let [wide, tall] = extent(window)?;
-    let mut edges = window.iter().zip(&maps[1].window);
+    let mut edges = maps.iter().flat_map(|map| window.iter().zip(&map.window));
     // Negated, so that an edge that is not a number counts as different.
     if !edges.all(|(one, other)| (one - other).abs() <= 1e-9 * wide.max(tall)) {
         return Err(FigureError::Shape("two maps of different windows"));
     }
-    let colours = [colour_axis(maps[0])?, colour_axis(maps[1])?];
-    let (arrangement, room) = if wide > STRIP * tall {
+    let colours = maps
+        .iter()
+        .map(|map| colour_axis(map))
+        .collect::<Result<Vec<Axis>, FigureError>>()?;
+    let length = setting.units.unit(Shown::Length);
+    let axes = [0, 1].map(|k| Axis::over(length.of(window[k]), length.of(window[k + 2])));
+    let (arrangement, room) = if setting.width == Width::Narrow {
+        let side = axis::side_room(&axes[1], ABOVE[1]);
+        let across = NARROW_SHEET - 2.0 * margin - side - 10.0;
+        (Arrangement::Above, [across, BESIDE[0]])
+    } else if wide > STRIP * tall {
         (Arrangement::Above, ABOVE)
     } else {
         (Arrangement::Beside, BESIDE)
     };
     let points_per_metre = (room[0] / wide).min(room[1] / tall);
     let size = [wide * points_per_metre, tall * points_per_metre];
-    let axes = [0, 1].map(|k| Axis::over(window[k] * 1e3, window[k + 2] * 1e3));
+    let titles = ["x", "y"].map(|name| format!("{name}, {}", length.name));
 
     // A label at the end of an axis reaches half its width past it.
     let label = colours
@@ -96,18 +112,18 @@ pub(super) fn twins(maps: [&PlanMap; 2], told: &str) -> Result<Sheet, FigureErro
         .chain([&axes[0]])
         .map(|axis| axis.label_width(10))
         .fold(0.0, f64::max);
-    let left = MARGIN + axis::side_room(&axes[1], size[1]);
+    let left = margin + axis::side_room(&axes[1], size[1]);
     let panel = size[0].max(LEAST);
     let step = match arrangement {
         Arrangement::Beside => [panel + label + 14.0, 0.0],
         Arrangement::Above => [0.0, OVER + size[1] + BELOW + 14.0],
     };
-    let right = left + step[0] + panel + MARGIN.max(label / 2.0 + 4.0);
-    let mut sheet = Sheet::new(right.max(360.0));
-    let top = sheet.header(&maps[0].title, told) + 4.0;
+    let right = left + step[0] + panel + margin.max(label / 2.0 + 4.0);
+    let mut sheet = Sheet::new(right.max(setting.width.sheet(360.0)));
+    let top = sheet.header(&maps[0].title, told, setting.width) + 4.0;
 
     let mut bottom = top;
-    for (index, (map, colours)) in maps.into_iter().zip(&colours).enumerate() {
+    for (index, (map, colours)) in maps.iter().zip(&colours).enumerate() {
         let [x, y] = step.map(|s| s * index as f64);
         let frame = Frame {
             left: left + x,
@@ -125,15 +141,15 @@ pub(super) fn twins(maps: [&PlanMap; 2], told: &str) -> Result<Sheet, FigureErro
         sheet.pictures.push(raster::picture(map, &view, colours));
         parts::draw(&mut sheet, &view, map);
         if arrangement == Arrangement::Above || index == 0 {
-            axis::left(&mut sheet, frame, (&axes[1], "y, mm"), Grid::Without);
+            axis::left(&mut sheet, frame, (&axes[1], &titles[1]), Grid::Without);
         }
-        axis::bottom(&mut sheet, frame, (&axes[0], Some("x, mm")));
+        axis::bottom(&mut sheet, frame, (&axes[0], Some(&titles[0])));
         bottom = frame.bottom + BELOW;
     }
     let room = Frame {
-        left: MARGIN,
+        left: margin,
         top: bottom + 6.0,
-        right: sheet.size[0] - MARGIN,
+        right: sheet.size[0] - margin,
         bottom: f64::INFINITY,
     };
     sheet.size[1] = legend(&mut sheet, room, &key(maps, &colours)) + 12.0;
@@ -159,10 +175,10 @@ fn bar(sheet: &mut Sheet, (map, colours): (&PlanMap, &Axis), (frame, width): (Fr
     sheet.closed_within(bar, &corners(bar), Stroke::solid(NARROW, GREY));
 }
 
-/// One key for both: what they share is named once.
-fn key(maps: [&PlanMap; 2], colours: &[Axis; 2]) -> Vec<(Sample, String)> {
+/// One key for all: what they share is named once.
+fn key(maps: &[&PlanMap], colours: &[Axis]) -> Vec<(Sample, String)> {
     let mut items: Vec<(Sample, String)> = Vec::new();
-    for (map, colours) in maps.into_iter().zip(colours) {
+    for (map, colours) in maps.iter().zip(colours) {
         for item in parts::key(map, colours, Some(parts::TINT)) {
             if !items.contains(&item) {
                 items.push(item);

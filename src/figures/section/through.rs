@@ -3,7 +3,6 @@
 use crate::figures::{
     FigureError,
     axis::{self, Axis, significant},
-    clip::Frame,
     drawable,
     legend::Sample,
     section::{ROUNDING, SectionPlot, View, place_stroke},
@@ -16,10 +15,10 @@ const JUMP: Stroke = Stroke::dashed(NARROW, INK, &[1.5, 2.0]);
 /// Draws a line for every place; returns their names with the jump between the faces.
 pub(super) fn draw(
     sheet: &mut Sheet,
-    (view, panel): (&View, Frame),
+    view: &View,
     plot: &SectionPlot,
 ) -> Result<Vec<(Sample, String)>, FigureError> {
-    let section = &plot.section;
+    let (section, panel) = (&plot.section, view.frame);
     let points = || {
         let plates = section.through.iter().flat_map(|through| &through.plates);
         plates.flatten()

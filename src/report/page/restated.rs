@@ -21,7 +21,7 @@ const COLUMNS: [(&str, Shown); 5] = [
 ];
 
 impl Page<'_> {
-    /// Tells everything but what is stated as written and what is drawn in a system of units.
+    /// Tells in a system of units everything but what is stated as written, and what comes told in it.
     pub(super) fn restate(&mut self, units: System) {
         if units == System::Si {
             return;

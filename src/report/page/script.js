@@ -102,8 +102,9 @@
       const parts = values.layers
         .filter((layer) => layer.values[at] !== null)
         .map((layer) => layer.name + " " + layer.values[at] + " " + layer.unit);
-      const place = "x " + (left + across * (right - left)).toFixed(1) + " mm, y " +
-        (lower + up * (upper - lower)).toFixed(1) + " mm: ";
+      const told = (length) => length.toFixed(values.places) + " " + values.length;
+      const place = "x " + told(left + across * (right - left)) + ", y " +
+        told(lower + up * (upper - lower)) + ": ";
       pointer.textContent = place + (parts.length > 0 ? parts.join(", ") : "no face on face");
       return true;
     };

@@ -2,21 +2,29 @@
 
 use serde_json::{Value, json};
 
-use crate::report::page::Fields;
+use crate::{
+    report::page::Fields,
+    units::{Shown, System},
+};
 
 /// Significant digits of a value under the pointer.
 const DIGITS: i32 = 3;
 
 /// The fields of a page as JSON that may stand in a script element: no `<` is left in it.
-pub(super) fn script(fields: &Fields) -> String {
+pub(super) fn script(fields: &Fields, units: System) -> String {
     let map = fields.map;
-    let mut layers = vec![layer(("pressure", "MPa"), (&map.pressure, 1e-6))];
+    let told = |name: &str, shown: Shown, values: &[f64]| {
+        let unit = units.unit(shown);
+        layer((name, unit.name), (values, unit.size.recip()))
+    };
+    let mut layers = vec![told("pressure", Shown::Pressure, &map.pressure)];
     if let Some(gap) = &map.gap {
-        layers.push(layer(("gap", "µm"), (gap, 1e6)));
+        layers.push(told("gap", Shown::Gap, gap));
     }
-    layers.push(layer(
-        ("local conductance", "W/(m²·K)"),
-        (&map.conductance, 1.0),
+    layers.push(told(
+        "local conductance",
+        Shown::Conductance,
+        &map.conductance,
     ));
     if let Some(heat) = fields.heat.filter(|heat| heat.size == map.size) {
         let (factor, unit) = match fields.watts {
@@ -31,8 +39,18 @@ pub(super) fn script(fields: &Fields) -> String {
             (&heat.concentration, 1.0),
         ));
     }
-    let millimetres = map.window.map(|edge| rounded(edge * 1e3));
-    let object = json!({ "window": millimetres, "size": map.size, "layers": layers });
+    let length = units.unit(Shown::Length);
+    let window = map.window.map(|edge| length.of(edge));
+    // A place is told to about a two thousandth of the window.
+    let wide = (window[2] - window[0]).max(window[3] - window[1]);
+    let places = (3.4 - wide.max(1e-9).log10()).floor().clamp(0.0, 6.0) as u32;
+    let object = json!({
+        "window": window.map(rounded),
+        "length": length.name,
+        "places": places,
+        "size": map.size,
+        "layers": layers,
+    });
     object.to_string().replace('<', "\\u003c")
 }
 
