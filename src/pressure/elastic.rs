@@ -113,7 +113,6 @@ pub fn solve_from(problem: &Problem, previous: &Field) -> Result<Field, Failure>
 /// heads.
 ///
 /// Of a field of another grid nothing is taken.
-/// Checked: `what_does_not_mirror_is_solved_whole`.
 pub fn solve_again(problem: &Problem, previous: &Field) -> Result<Field, Failure> {
     solve_started(problem, &Start::Field(previous), Some(&previous.mesh))
 }

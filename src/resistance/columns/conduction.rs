@@ -33,6 +33,8 @@ impl Placed {
 
     /// The same places for terminals that differ in the conductance of bolts alone; none where they differ
     /// otherwise.
+    ///
+    /// Checked: `terminals_on_their_columns_serve_other_bolts_and_no_other_zones`.
     pub fn under(&self, terminals: &Terminals) -> Option<Self> {
         let own = &self.terminals;
         let same = own.source == terminals.source

@@ -117,8 +117,8 @@ impl Columns {
             .filter(|_| !others.is_empty())
             .map_or(Ok(()), solve)?;
         let each = |variant: Variant| {
-            let own = states.iter().filter(|state| state.variant == variant);
-            own.map(solve).collect::<Result<(), Failure>>()
+            let mut own = states.iter().filter(|state| state.variant == variant);
+            own.try_for_each(solve)
         };
         // Of several failures the first is told, whichever came first.
         let solved: Vec<Result<(), Failure>> = others.into_par_iter().map(each).collect();
