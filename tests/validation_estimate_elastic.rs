@@ -7,9 +7,9 @@
 use std::f64::consts::PI;
 
 use ringsum::{
-    estimate::{CaseResult, Chain, Choice, Fineness, Options, Realisation, Watch},
+    estimate::{CaseResult, Chain, Choice, Fineness, Options, Realisation, TorquePoint, Watch},
     joint::{self, Joint},
-    uncertainty,
+    uncertainty::{self, CONFIDENCE, SweepOptions},
 };
 use serde_json::Value;
 
@@ -248,6 +248,42 @@ fn torque_scales_the_field_and_leaves_its_shape() {
         2e-4,
         "contact",
     );
+}
+
+#[test]
+fn a_chain_from_another_fineness_answers_as_its_own() {
+    let bent = "slope = 0.1060660, flatness = \"5 µm\" }";
+    let text = text()
+        .replace(BY_TORQUE[0], BY_TORQUE[1])
+        .replace("slope = 0.1060660 }", bent);
+    let joint = joint(&text, &[ASIDE]);
+    let sweep = |chain: &Chain| {
+        let options = SweepOptions {
+            group: 0,
+            from: None,
+            to: None,
+            steps: 3,
+            confidence: CONFIDENCE,
+            chain: NO_DRAWS,
+        };
+        uncertainty::sweep_along(chain, &options).expect("a sweep")
+    };
+    let normal = chain(&joint, Fineness::Normal);
+    normal.expect_contact(Fineness::Fast).expect("a contact");
+    let lent = normal.at_fineness(Fineness::Fast).expect("a chain");
+    let own = sweep(&chain(&joint, Fineness::Fast));
+    assert_eq!(own.resolution, "fast");
+    // Both solve the same from the same starts.
+    assert_eq!(sweep(&lent), own);
+    // From a chain that is solved it also has the temperatures of the plates. This metal does not mind
+    // them, so that the residual of the heat is left, 1e-8 of the load.
+    case(&normal);
+    let late = sweep(&normal.at_fineness(Fineness::Fast).expect("a chain"));
+    assert_eq!(late.points.len(), own.points.len());
+    for (late, own) in late.points.iter().zip(&own.points) {
+        let whole = |point: &TorquePoint| point.source_to_sink.nominal;
+        near(whole(late), whole(own), 1e-6, "source to sink");
+    }
 }
 
 #[test]

@@ -99,21 +99,29 @@ pub fn size(problem: &Problem) -> Result<Size, Failure> {
 /// Checked: `layout_cases_are_met_when_fine`, `one_bolt_presses_as_in_a_round_pair` and the rest of
 /// `tests/validation_columns.rs`.
 pub fn solve(problem: &Problem) -> Result<Field, Failure> {
-    solve_started(problem, &Start::Bolts)
+    solve_started(problem, &Start::Bolts, None)
 }
 
 /// Solves the contact from where a field of the same grid stood: other forces, other gaps.
 ///
 /// A field of another grid is no help and no harm.
 pub fn solve_from(problem: &Problem, previous: &Field) -> Result<Field, Failure> {
-    solve_started(problem, &Start::Field(previous))
+    solve_started(problem, &Start::Field(previous), None)
+}
+
+/// The same for the bodies and holes of that field, whose mesh is taken over: other forces, gaps, faces or
+/// heads.
+///
+/// Of a field of another grid nothing is taken.
+pub fn solve_again(problem: &Problem, previous: &Field) -> Result<Field, Failure> {
+    solve_started(problem, &Start::Field(previous), Some(&previous.mesh))
 }
 
 /// Solves the contact from where a field of a coarser grid touches.
 ///
 /// The grid only decides how many steps it takes.
 pub fn solve_from_coarser(problem: &Problem, coarser: &Field) -> Result<Field, Failure> {
-    solve_started(problem, &Start::Coarser(coarser))
+    solve_started(problem, &Start::Coarser(coarser), None)
 }
 
 /// Solves the contact from a stated set of touching columns, the same for every interface.
@@ -123,10 +131,10 @@ pub fn solve_from_set(
     problem: &Problem,
     touches: &(dyn Fn([f64; 2]) -> bool + Sync),
 ) -> Result<Field, Failure> {
-    solve_started(problem, &Start::Set(touches))
+    solve_started(problem, &Start::Set(touches), None)
 }
 
-fn solve_started(problem: &Problem, start: &Start) -> Result<Field, Failure> {
+fn solve_started(problem: &Problem, start: &Start, known: Option<&Mesh>) -> Result<Field, Failure> {
     check::sound(problem)?;
     let plan = resolution::plan(problem)?;
     let size = resolution::size(problem, &plan);
@@ -141,7 +149,10 @@ fn solve_started(problem: &Problem, start: &Start) -> Result<Field, Failure> {
     rayon::join(
         || {
             problem.tell(Stage::Grid, 0, f64::NAN);
-            let mesh = Mesh::new(problem, plan)?;
+            let mesh = match known {
+                Some(mesh) if mesh.plan == plan => mesh.clone(),
+                _ => Mesh::new(problem, plan)?,
+            };
             if let Some(mirror) = symmetry::mirror(problem, &mesh) {
                 return symmetry::solve(problem, (mesh, &mirror), start);
             }

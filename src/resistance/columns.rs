@@ -52,7 +52,7 @@ mod stack;
 mod terminals;
 mod zone;
 
-pub use conduction::{Conduction, Perfect, solve_both};
+pub use conduction::{Conduction, Perfect, Placed, solve_both};
 pub use equations::Family;
 pub use heat::{Health, Heat, Hottest};
 pub use nodal::nodal;

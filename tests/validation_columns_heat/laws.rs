@@ -7,8 +7,8 @@ use ringsum::{
     resistance::{
         Failure,
         columns::{
-            Across, Body, Bolt, Conduction, Conductivity, Edge, Meeting, Perfect, Rim, Seat, Side,
-            Sink, Slab, Source, Stack, Terminals, Zone, solve_both,
+            Across, Body, Bolt, Conduction, Conductivity, Edge, Meeting, Perfect, Placed, Rim,
+            Seat, Side, Sink, Slab, Source, Stack, Terminals, Zone, solve_both,
         },
     },
 };
@@ -137,6 +137,31 @@ fn another_conductance_from_the_last_temperatures_is_the_same_as_anew() {
     let anew = fresh.solve(&second).expect("it is solved");
     assert!((again.source_to_sink / anew.source_to_sink - 1.0).abs() < 1e-9);
     assert!((again.hottest.rise / anew.hottest.rise - 1.0).abs() < 1e-6);
+}
+
+#[test]
+fn terminals_on_their_columns_serve_other_bolts_and_no_other_zones() {
+    let (stack, mut terminals) = joint();
+    let stack = Arc::new(stack);
+    let local = about_bolts(&stack, [1e5, 30.0]);
+    let placed = Placed::new(&stack, &terminals).expect("it fits");
+    for bolt in &mut terminals.bolts {
+        bolt.strength += 0.05;
+    }
+    let stronger = placed.under(&terminals).expect("zones are the same");
+    let mut kept = Conduction::placed(&stronger, &METALS).expect("it fits");
+    let mut anew = Conduction::new(&stack, &terminals, &METALS).expect("it fits");
+    let solved = |conduction: &mut Conduction| conduction.solve(&local).expect("it is solved");
+    // The same equations from the same start.
+    let [one, other] = [solved(&mut kept), solved(&mut anew)];
+    assert_eq!(one.source_to_sink.to_bits(), other.source_to_sink.to_bits());
+    let perfect = [
+        Perfect::placed(&stronger, &METALS).expect("it is solved"),
+        Perfect::new(&stack, &terminals, &METALS).expect("it is solved"),
+    ];
+    assert_eq!(perfect[0], perfect[1]);
+    terminals.sinks = vec![Sink::Rim(Rim::Straight(Edge::North))];
+    assert!(placed.under(&terminals).is_none());
 }
 
 // A bolt alone: heat converges to its head and leaves it below; more strength helps, and the

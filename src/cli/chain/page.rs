@@ -5,7 +5,7 @@ use crate::{
         chain::{Choice, Entry, Fields, Losses, Task, compared},
         console::Trouble,
     },
-    estimate::{self, Chain, Failure, FieldMap, Fineness, Options, TorqueSweep, Watch},
+    estimate::{self, Chain, Failure, FieldMap, Fineness, Options, TorqueSweep},
     joint::{Joint, Medium, Tightening},
     uncertainty::{
         self, Comparison, FEWEST_BASES, InMedium, Ranking, RankingOptions, SweepOptions, Target,
@@ -127,12 +127,20 @@ pub fn handed(task: &Task, versions: &[Entry], asked: &Asked) -> Result<Handed, 
         task.watch.tell("");
         (found, swept)
     } else {
-        // A chain of its own knows nothing of the other, so both may be solved side by side.
-        let beside = |sweep: SweepOptions| {
-            let chain = Chain::of(task.joint, quick, &Watch::none())?;
-            uncertainty::sweep_along(&chain, &sweep)
+        // The fast contact is a step on the way to the other, so it is solved once. From there on neither
+        // chain knows of what the other learns, and both may be solved side by side.
+        let lent = match &sweep {
+            Some(_) => Some(task.watched(|| {
+                chain.expect_contact(Fineness::Fast)?;
+                chain.at_fineness(Fineness::Fast)
+            })?),
+            None => None,
         };
-        rayon::join(|| task.watched(along), || sweep.map(beside))
+        let beside = |chain: Chain| {
+            let sweep = sweep.as_ref()?;
+            Some(uncertainty::sweep_along(&chain, sweep))
+        };
+        rayon::join(|| task.watched(along), || lent.and_then(beside))
     };
     let mut found = found?;
     match swept {

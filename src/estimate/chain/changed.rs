@@ -7,7 +7,7 @@ use std::{
 
 use crate::{
     estimate::{
-        Chain, Failure,
+        Chain, Failure, Fineness,
         chain::{ForceEnd, Model, cone::ConeModel},
         forces::Group,
     },
@@ -19,7 +19,44 @@ impl Chain<'_> {
     ///
     /// Groups whose preload is stated keep it.
     pub fn with_torque(&self, group: usize, torque: f64) -> Result<Chain<'static>, Failure> {
-        self.with(with_torque(self.joint(), group, torque))
+        let changed = with_torque(self.joint(), group, torque);
+        if changed == *self.joint() {
+            // What is solved of this chain is solved of that one.
+            return Ok(Chain {
+                joint: Cow::Owned(changed),
+                groups: self.groups.clone(),
+                group_of: self.group_of.clone(),
+                model: self.model.clone(),
+                error: self.error.clone(),
+            });
+        }
+        self.with(changed)
+    }
+
+    /// The same joint on a field of another fineness, which knows what this chain knows of contact and
+    /// plates; what either learns later stays its own.
+    ///
+    /// With [`Chain::expect_contact`] before, no contact that both need is solved twice. The answers are
+    /// those of a chain of its own.
+    /// Checked: `a_chain_from_another_fineness_answers_as_its_own`.
+    pub fn at_fineness(&self, fineness: Fineness) -> Result<Chain<'static>, Failure> {
+        let model = match &self.model {
+            Model::Cone(_) => self.model.clone(),
+            Model::Elastic(model) => {
+                Model::Elastic(Box::new(model.at_fineness(self.joint(), fineness)?))
+            }
+        };
+        let joint = self.joint().clone();
+        self.changed(joint, (self.groups.clone(), model), Arc::default())
+    }
+
+    /// Solves the contact that a field of another, coarser fineness needs at nominal; it is a step on the
+    /// way to that of this chain.
+    pub fn expect_contact(&self, fineness: Fineness) -> Result<(), Failure> {
+        match &self.model {
+            Model::Cone(_) => Ok(()),
+            Model::Elastic(model) => model.expect_contact(self, fineness),
+        }
     }
 
     /// The same joint with every bolt at its least or its largest force in service of one case;

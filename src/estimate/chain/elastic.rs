@@ -134,6 +134,33 @@ impl ElasticModel {
         })
     }
 
+    /// The same joint at another fineness, with what is known of its contact, its plates and their
+    /// temperatures.
+    pub(super) fn at_fineness(&self, joint: &Joint, fineness: Fineness) -> Result<Self, Failure> {
+        let count = joint.service.cases.len();
+        Ok(Self {
+            fineness,
+            solver: self.solver.lent(joint)?,
+            warmths: (0..count).map(|case| self.known_warmth(case)).collect(),
+            ..self.afresh()
+        })
+    }
+
+    /// Solves the contact of a case as far as another fineness needs it, heat left out, so that chains of
+    /// both find it.
+    pub(super) fn expect_contact(&self, chain: &Chain, fineness: Fineness) -> Result<(), Failure> {
+        let start = self.known_warmth(0).unwrap_or_else(|| chain.cold(0));
+        let conditions = chain.conditions_at(0, &start, &Realisation::default())?;
+        if conditions.forces.iter().sum::<f64>() <= 0.0 {
+            return Ok(());
+        }
+        chain.refuse_open(0, &conditions.forces)?;
+        // What becomes of flatness asks for every field that a nominal state does.
+        self.solver
+            .flatness(chain.joint(), asked(fineness), &conditions)
+            .map(|_| ())
+    }
+
     /// Lets go of all fields but the nominal ones of the cases.
     pub(super) fn forget_fields(&self) {
         self.solver.forget();

@@ -12,12 +12,50 @@ use crate::resistance::{
     },
 };
 
-/// Conduction in a stack; each solution starts from the one before.
-pub struct Conduction {
+/// A stack with its terminals put on its columns: integrals over zones and rings, which neither
+/// conductivities nor faces nor the conductance of bolts move.
+#[derive(Clone, Debug)]
+pub struct Placed {
     stack: Arc<Stack>,
     terminals: Terminals,
+    ends: Arc<Ends>,
+}
+
+impl Placed {
+    /// Works out the integrals.
+    pub fn new(stack: &Arc<Stack>, terminals: &Terminals) -> Result<Self, Failure> {
+        Ok(Self {
+            ends: Arc::new(Ends::new(stack, terminals)?),
+            stack: stack.clone(),
+            terminals: terminals.clone(),
+        })
+    }
+
+    /// The same places for terminals that differ in the conductance of bolts alone; none where they differ
+    /// otherwise.
+    ///
+    /// Checked: `terminals_on_their_columns_serve_other_bolts_and_no_other_zones`.
+    pub fn under(&self, terminals: &Terminals) -> Option<Self> {
+        let own = &self.terminals;
+        let same = own.source == terminals.source
+            && own.sinks == terminals.sinks
+            && own.bolts.len() == terminals.bolts.len()
+            && own.bolts.iter().zip(&terminals.bolts).all(|(one, other)| {
+                let strength = other.strength;
+                super::Bolt { strength, ..*one } == *other
+            });
+        same.then(|| Self {
+            stack: self.stack.clone(),
+            terminals: terminals.clone(),
+            ends: self.ends.clone(),
+        })
+    }
+}
+
+/// Conduction in a stack; each solution starts from the one before.
+pub struct Conduction {
+    placed: Placed,
     conductivity: Vec<Conductivity>,
-    ends: Ends,
     equations: Equations,
     reduced: Option<Reduced>,
     /// Residual asked for, over the load; readings are off by far less.
@@ -47,6 +85,17 @@ impl Perfect {
         check(stack, terminals, conductivity)?;
         let ends = Ends::new(stack, terminals)?;
         Self::of(stack, &ends, (terminals, conductivity))
+    }
+
+    /// The same where the terminals are on their columns.
+    pub fn placed(placed: &Placed, conductivity: &[Conductivity]) -> Result<Self, Failure> {
+        let Placed {
+            stack,
+            terminals,
+            ends,
+        } = placed;
+        check(stack, terminals, conductivity)?;
+        Self::of(stack, ends, (terminals, conductivity))
     }
 
     fn of(
@@ -105,21 +154,22 @@ impl Conduction {
         conductivity: &[Conductivity],
     ) -> Result<Self, Failure> {
         check(stack, terminals, conductivity)?;
-        let ends = Ends::new(stack, terminals)?;
-        Ok(Self::of(stack, ends, (terminals, conductivity)))
+        let placed = Placed::new(stack, terminals)?;
+        Ok(Self::of(&placed, conductivity))
     }
 
-    fn of(
-        stack: &Arc<Stack>,
-        ends: Ends,
-        (terminals, conductivity): (&Terminals, &[Conductivity]),
-    ) -> Self {
-        let equations = Equations::new(stack, &ends, (terminals, conductivity), Arrangement::Apart);
+    /// The same where the terminals are on their columns.
+    pub fn placed(placed: &Placed, conductivity: &[Conductivity]) -> Result<Self, Failure> {
+        check(&placed.stack, &placed.terminals, conductivity)?;
+        Ok(Self::of(placed, conductivity))
+    }
+
+    fn of(placed: &Placed, conductivity: &[Conductivity]) -> Self {
+        let given = (&placed.terminals, conductivity);
+        let equations = Equations::new(&placed.stack, &placed.ends, given, Arrangement::Apart);
         Self {
-            stack: stack.clone(),
-            terminals: terminals.clone(),
+            placed: placed.clone(),
             conductivity: conductivity.to_vec(),
-            ends,
             equations,
             reduced: None,
             tolerance: TOLERANCE,
@@ -146,7 +196,7 @@ impl Conduction {
     /// Checked: `layout_cases_are_met_with_the_reference_fields`, `manufactured_heat_converges`.
     pub fn solve(&mut self, conductance: &[Vec<Vec<f64>>]) -> Result<Heat, Failure> {
         let conductances = self.conductances(conductance)?;
-        if blocked(&self.terminals, &self.ends, &conductances) {
+        if blocked(&self.placed.terminals, &self.placed.ends, &conductances) {
             return Ok(self.reader(&conductances).blocked());
         }
         self.equations.join(&conductances)?;
@@ -172,7 +222,7 @@ impl Conduction {
         conductance: &[Vec<Vec<f64>>],
     ) -> Result<Heat, Failure> {
         let conductances = self.conductances(conductance)?;
-        if blocked(&self.terminals, &self.ends, &conductances) {
+        if blocked(&self.placed.terminals, &self.placed.ends, &conductances) {
             return Ok(self.reader(&conductances).blocked());
         }
         if !family.fits(self.equations.rise.len()) {
@@ -217,18 +267,19 @@ impl Conduction {
 
     fn reader<'a>(&'a self, conductances: &'a [Vec<Vec<f64>>]) -> Reader<'a> {
         Reader {
-            stack: &self.stack,
-            terminals: &self.terminals,
+            stack: &self.placed.stack,
+            terminals: &self.placed.terminals,
             conductivity: &self.conductivity,
-            ends: &self.ends,
+            ends: &self.placed.ends,
             conductances,
         }
     }
 
     /// Local conductance times area, W/K; refuses what is no conductance.
     fn conductances(&self, conductance: &[Vec<Vec<f64>>]) -> Result<Vec<Vec<Vec<f64>>>, Failure> {
-        let faces = &self.stack.faces;
-        let columns = self.stack.plan.columns();
+        let stack = &self.placed.stack;
+        let faces = &stack.faces;
+        let columns = stack.plan.columns();
         let fits = conductance.len() == faces.len()
             && conductance.iter().zip(faces).all(|(values, parts)| {
                 values.len() == parts.len() && values.iter().all(|part| part.len() == columns)
@@ -269,15 +320,14 @@ pub fn solve_both(
     conductance: &[Vec<Vec<f64>>],
 ) -> Result<(Conduction, Heat, Perfect), Failure> {
     check(stack, terminals, conductivity)?;
-    let ends = Ends::new(stack, terminals)?;
-    let given = (terminals, conductivity);
+    let placed = Placed::new(stack, terminals)?;
     let (real, perfect) = rayon::join(
         || {
-            let mut conduction = Conduction::of(stack, ends.clone(), given);
+            let mut conduction = Conduction::of(&placed, conductivity);
             let heat = conduction.solve(conductance)?;
             Ok::<_, Failure>((conduction, heat))
         },
-        || Perfect::of(stack, &ends, given),
+        || Perfect::of(stack, &placed.ends, (terminals, conductivity)),
     );
     let (conduction, heat) = real?;
     Ok((conduction, heat, perfect?))

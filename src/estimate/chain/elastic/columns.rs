@@ -14,6 +14,8 @@ mod terminals;
 
 use std::sync::{Arc, OnceLock};
 
+use rayon::prelude::*;
+
 use crate::{
     estimate::{
         Failure, Flatness, Watch,
@@ -93,6 +95,35 @@ impl Columns {
         };
         self.bank.field(joint, &wanted)
     }
+
+    /// Solves the contacts of the variants among states side by side, to be found when each is asked for.
+    ///
+    /// Those of one variant are solved one after the other and start from each other, the first from the
+    /// joint as stated, so that variants know nothing of each other and no thread decides where a solution
+    /// starts.
+    fn variants(&self, joint: &Joint, level: Level, states: &[State]) -> Result<(), Failure> {
+        let mut others: Vec<Variant> = Vec::new();
+        for state in states {
+            if state.variant != Variant::Stated && !others.contains(&state.variant) {
+                others.push(state.variant);
+            }
+        }
+        let solve = |state: &State| {
+            let task = (level, state.variant);
+            self.field(joint, task, &state.conditions).map(|_| ())
+        };
+        let stated = states.iter().find(|state| state.variant == Variant::Stated);
+        stated
+            .filter(|_| !others.is_empty())
+            .map_or(Ok(()), solve)?;
+        let each = |variant: Variant| {
+            let mut own = states.iter().filter(|state| state.variant == variant);
+            own.try_for_each(solve)
+        };
+        // Of several failures the first is told, whichever came first.
+        let solved: Vec<Result<(), Failure>> = others.into_par_iter().map(each).collect();
+        solved.into_iter().collect()
+    }
 }
 
 impl Solver for Columns {
@@ -130,9 +161,10 @@ impl Solver for Columns {
         self.field(joint, task, conditions).map(|_| ())
     }
 
-    /// Contacts are solved one after the other, each on all cores; then the heat of all side by side.
-    /// So no thread decides where a solution starts.
+    /// Contacts of one variant are solved one after the other; then the heat of all side by side. So no
+    /// thread decides where a solution starts.
     fn paths(&self, joint: &Joint, level: Level, states: &[State]) -> Result<Vec<Path>, Failure> {
+        self.variants(joint, level, states)?;
         let order = self.bank.order;
         let mut plates = None;
         let mut loads = Vec::with_capacity(states.len());
@@ -175,6 +207,11 @@ impl Solver for Columns {
 
     fn remade(&self, joint: &Joint, same_contact: bool) -> Result<Arc<dyn Solver>, Failure> {
         let bank = self.bank.remade(joint, same_contact)?;
+        Ok(Arc::new(Self { bank }))
+    }
+
+    fn lent(&self, _: &Joint) -> Result<Arc<dyn Solver>, Failure> {
+        let bank = self.bank.lent();
         Ok(Arc::new(Self { bank }))
     }
 

@@ -137,6 +137,10 @@ impl Solver for Round {
         }))
     }
 
+    fn lent(&self, joint: &Joint) -> Result<Arc<dyn Solver>, Failure> {
+        self.remade(joint, true)
+    }
+
     fn forms(&self, _: &Joint) -> &'static [Variant] {
         &FORMS
     }

@@ -129,6 +129,10 @@ pub(super) trait Solver: Debug + Send + Sync {
     /// where it is the same.
     fn remade(&self, joint: &Joint, same_contact: bool) -> Result<Arc<dyn Solver>, Failure>;
 
+    /// A solver of the same joint that knows what this one knows now. What either learns later stays its
+    /// own, so that both may work side by side and neither moves a digit of the other.
+    fn lent(&self, joint: &Joint) -> Result<Arc<dyn Solver>, Failure>;
+
     /// Lets go of fields that may be asked for again; they are solved anew then.
     fn forget(&self) {}
 

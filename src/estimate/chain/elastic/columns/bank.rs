@@ -93,13 +93,32 @@ impl Bank {
         Ok(bank)
     }
 
+    /// A bank of the same joint with the fields, tables and plates that are known now; what either learns
+    /// later stays its own.
+    pub(super) fn lent(&self) -> Self {
+        let own = |plates: &OnceLock<Arc<Plates>>| match plates.get() {
+            Some(known) => OnceLock::from(Arc::new(known.lent())),
+            None => OnceLock::new(),
+        };
+        Self {
+            order: self.order,
+            // Two that tell on one line would talk across each other.
+            watch: Watch::none(),
+            most_bytes: self.most_bytes,
+            solved: Mutex::new(self.solved().clone()),
+            tables: Mutex::new(self.tables().clone()),
+            plates: self.plates.each_ref().map(own),
+        }
+    }
+
     /// Forgets every field; those in use elsewhere live on there.
     pub(super) fn forget(&self) {
         self.solved().clear();
-        self.tables
-            .lock()
-            .unwrap_or_else(PoisonError::into_inner)
-            .clear();
+        self.tables().clear();
+    }
+
+    fn tables(&self) -> MutexGuard<'_, Vec<Tabulated>> {
+        self.tables.lock().unwrap_or_else(PoisonError::into_inner)
     }
 
     fn solved(&self) -> MutexGuard<'_, Vec<Solved>> {
@@ -140,8 +159,7 @@ impl Bank {
         if wanted.variant != Variant::Stated || wanted.asperities.iter().any(Option::is_some) {
             return None;
         }
-        let tables = self.tables.lock().unwrap_or_else(PoisonError::into_inner);
-        tables
+        self.tables()
             .iter()
             .filter(|(level, ..)| *level == wanted.level)
             .find_map(|(_, base, table)| table.at(factor(base, wanted.forces)?))
@@ -180,9 +198,7 @@ impl Bank {
             table.len(),
             table.error
         ));
-        self.tables
-            .lock()
-            .unwrap_or_else(PoisonError::into_inner)
+        self.tables()
             .push((level, forces.to_vec(), Arc::new(table)));
         Ok(())
     }
@@ -203,7 +219,7 @@ impl Bank {
         };
         let start = self.start(joint, wanted, known)?;
         let field = with_problem(joint, self.order, &task, |problem| match &start {
-            Start::Near(field) => elastic::solve_from(problem, field),
+            Start::Near(field) => elastic::solve_again(problem, field),
             Start::Coarser(field) => elastic::solve_from_coarser(problem, field),
             Start::Bolts => elastic::solve(problem),
         });

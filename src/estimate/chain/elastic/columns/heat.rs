@@ -1,6 +1,6 @@
 //! Heat through the plates on the grid of the contact.
 
-use std::sync::{Arc, Mutex, PoisonError};
+use std::sync::{Arc, Mutex, OnceLock, PoisonError};
 
 use crate::{
     estimate::chain::{
@@ -15,7 +15,8 @@ use crate::{
     resistance::{
         self, Path,
         columns::{
-            Body, Conduction, Conductivity, Heat, Meeting, Perfect, Slab, Stack, Terminals, nodal,
+            Body, Conduction, Conductivity, Heat, Meeting, Perfect, Placed, Slab, Stack, Terminals,
+            nodal,
         },
     },
 };
@@ -30,6 +31,8 @@ pub(super) struct Plates {
     pub(super) terminals: Ends,
     /// Conductivity through every plate over that in its plane.
     through: Vec<f64>,
+    /// Source, sinks and bolts on the columns, as they were met first.
+    placed: OnceLock<Placed>,
     /// Perfect contact met so far, with the sink temperature where the back radiates, K.
     perfect: Mutex<Vec<(f64, Perfect)>>,
 }
@@ -82,8 +85,21 @@ impl Plates {
                 .iter()
                 .map(|plate| plate.material.through_ratio())
                 .collect(),
+            placed: OnceLock::new(),
             perfect: Mutex::new(Vec::new()),
         })
+    }
+
+    /// The same plates, with a memory of their own that holds what is known now.
+    pub(super) fn lent(&self) -> Self {
+        let known = self.perfect.lock().unwrap_or_else(PoisonError::into_inner);
+        Self {
+            stack: self.stack.clone(),
+            terminals: self.terminals.clone(),
+            through: self.through.clone(),
+            placed: self.placed.clone(),
+            perfect: Mutex::new(known.clone()),
+        }
     }
 
     /// Heat and path under conductances of the faces.
@@ -95,8 +111,9 @@ impl Plates {
     ) -> Result<(Heat, Path), resistance::Failure> {
         let conductivity = self.conductivity(in_plane);
         let terminals = self.terminals.under(conditions);
+        let placed = self.placed(&terminals)?;
         // Each load starts afresh, so that the order of the threads moves no digit.
-        let mut conduction = Conduction::new(&self.stack, &terminals, &conductivity)?;
+        let mut conduction = Conduction::placed(&placed, &conductivity)?;
         let (heat, perfect) = rayon::join(
             || conduction.solve(conductances),
             || self.perfect(conditions, (&terminals, &conductivity)),
@@ -109,6 +126,21 @@ impl Plates {
         };
         let path = self.path(&heat, (&perfect, floor))?;
         Ok((heat, path))
+    }
+
+    /// Terminals on the columns: zones and rings are put there once.
+    pub(super) fn placed(&self, terminals: &Terminals) -> Result<Placed, resistance::Failure> {
+        if let Some(known) = self.placed.get().and_then(|known| known.under(terminals)) {
+            return Ok(known);
+        }
+        let placed = Placed::new(&self.stack, terminals)?;
+        // A back that radiates about another temperature is another terminal: the first one stays.
+        Ok(
+            match self.placed.get_or_init(|| placed.clone()).under(terminals) {
+                Some(known) => known,
+                None => placed,
+            },
+        )
     }
 
     /// The path of a solution beside perfect contact, and beside perfect feet where there are some.
@@ -157,7 +189,7 @@ impl Plates {
         if let Some((_, perfect)) = known().iter().find(serves) {
             return Ok(perfect.clone());
         }
-        let perfect = Perfect::new(&self.stack, terminals, conductivity)?;
+        let perfect = Perfect::placed(&self.placed(terminals)?, conductivity)?;
         known().push((temperature, perfect.clone()));
         Ok(perfect)
     }

@@ -126,7 +126,8 @@ impl Plates {
         chain: &Chain,
         terminals: &Terminals,
     ) -> Result<(Vec<Numbered>, States), resistance::Failure> {
-        let mut conduction = Conduction::new(&self.stack, terminals, &chain.conductivity)?;
+        let placed = self.placed(terminals)?;
+        let mut conduction = Conduction::placed(&placed, &chain.conductivity)?;
         conduction.tolerance = TOLERANCE;
         let mut paths = Vec::new();
         let mut states: States = [Vec::new(), Vec::new()];
@@ -149,7 +150,8 @@ impl Plates {
         chain: &Chain,
         (terminals, families): (&Terminals, &Families),
     ) -> Result<Vec<Numbered>, resistance::Failure> {
-        let conduction = || Conduction::new(&self.stack, terminals, &chain.conductivity);
+        let placed = self.placed(terminals)?;
+        let conduction = || Conduction::placed(&placed, &chain.conductivity);
         let mut loaded = conduction()?;
         let mut bridge = None;
         let mut paths = Vec::new();

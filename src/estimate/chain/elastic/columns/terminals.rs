@@ -11,7 +11,7 @@ use crate::{
 const WALL: f64 = 1.25;
 
 /// Source, sinks and bolts of a joint before any conditions.
-#[derive(Debug)]
+#[derive(Clone, Debug)]
 pub(super) struct Ends {
     source: Source,
     sinks: Vec<Drain>,
@@ -20,7 +20,7 @@ pub(super) struct Ends {
 }
 
 /// A sink, some of which follow the temperature.
-#[derive(Debug)]
+#[derive(Clone, Debug)]
 enum Drain {
     Steady(Sink),
     /// The whole back radiates; its emissivity.
