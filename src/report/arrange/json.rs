@@ -133,7 +133,7 @@ struct LayoutCase {
 pub fn json(answer: &Answer, defaults: &Defaults) -> Value {
     let taken = defaults.taken.iter().map(|(key, value)| TakenTold {
         field: format!("arrange.{key}"),
-        value: value.to_string(),
+        value: value.clone(),
     });
     json!(ArrangeResult {
         ringsum: env!("CARGO_PKG_VERSION"),

@@ -283,7 +283,7 @@ pub fn answer_json(asked: &Question, answer: &Answer, name: &str) -> Value {
         title: answer.title.clone(),
         field: answer.field,
         planes: answer.planes.clone(),
-        unknown: asked.unknown.name().to_owned(),
+        unknown: asked.unknown.name().clone(),
         range: [asked.range.from, asked.range.to],
         best: BestTold {
             value: value(profile.best),
