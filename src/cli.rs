@@ -135,7 +135,7 @@ impl Command {
             Self::Explain(command) => command.run(console),
             Self::Completions(command) => command.run(console),
             Self::Man(command) => command.run(console),
-            Self::Schema(hidden::Schema {}) => hidden::Schema::run(console),
+            Self::Schema(command) => command.run(console),
         }
     }
 }

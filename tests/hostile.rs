@@ -477,6 +477,21 @@ fn out_names_a_folder_and_says_so() {
 }
 
 #[test]
+fn a_map_that_exists_is_refused_before_anything_is_solved() {
+    let folder = folder_with(LID);
+    fs::create_dir(folder.path().join("out")).expect("the test can do this");
+    let map = folder.path().join("out/map_1_service.csv");
+    // Not enough to solve: who solves first, tells of the memory.
+    let arguments = "draw joint.toml --maps --out out --memory 1MB";
+    let arguments: Vec<&str> = arguments.split(' ').collect();
+    refused(&folder, &arguments, &["--memory"]);
+    fs::write(&map, "kept").expect("the test can do this");
+    refused(&folder, &arguments, &["map_1_service.csv", "--force"]);
+    assert_eq!(fs::read(&map).expect("the test can do this"), b"kept");
+    assert_eq!(names(&folder.path().join("out")), ["map_1_service.csv"]);
+}
+
+#[test]
 fn a_link_is_written_through_only_when_replacing_is_asked_for() {
     let folder = folder_with(LID);
     let (real, link) = (

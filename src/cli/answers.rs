@@ -11,7 +11,10 @@ use crate::{
     },
     figures::Format,
     joint::Joint,
-    report::csv::{Ended, Table},
+    report::{
+        csv::{Ended, Table},
+        listing,
+    },
 };
 use std::path::{Path, PathBuf};
 
@@ -133,7 +136,7 @@ impl<'a> Answers<'a> {
                     Trouble::Usage { message, .. } => (message.clone(), Ended::Faulty),
                     Trouble::Output(_) | Trouble::Faults(_) => return Err(trouble),
                 };
-                let object = serde_json::json!({ "file": name, "ok": false, "failure": message });
+                let object = listing::unanswered(name, &message);
                 let row = self.table.without(name, ended, &message);
                 self.put(index, (&object, row), console)?;
                 Err(trouble.of_file(name))

@@ -285,6 +285,14 @@ pub fn tables(task: &Task, columns: usize) -> Result<Vec<(String, String)>, Trou
     Ok(tables)
 }
 
+/// Files of the maps of every interface in every case.
+pub fn map_names(joint: &Joint) -> Vec<String> {
+    let cases = joint.service.cases.iter();
+    cases
+        .flat_map(|case| (0..joint.interfaces()).map(|interface| map_name(interface, case.name)))
+        .collect()
+}
+
 /// File of the map of an interface in a case.
 pub fn map_name(interface: usize, case: &str) -> String {
     format!("map_{}_{case}.csv", interface + 1)

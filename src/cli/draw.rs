@@ -129,6 +129,12 @@ impl Draw {
             watch: self.batch.watch(),
         };
         let interface = chain::interface(joint, self.interface)?;
+        if self.maps && folder.exists() {
+            // A table that is to be kept is found before anything is solved.
+            for name in chain::map_names(joint) {
+                Target::new(&folder.join(name), self.existing())?;
+            }
+        }
         let fields = chain::fields(&task, interface, COLUMNS)?;
         let mut files = Vec::new();
         for (name, drawing) in drawings::of_joint(joint, &fields) {
@@ -143,10 +149,6 @@ impl Draw {
             }
         }
         results::make(folder)?;
-        // A map that exists is found before a figure is written.
-        for (path, _) in &files {
-            Target::new(path, self.existing())?;
-        }
         let mut written = Vec::new();
         for (path, bytes) in files {
             Target::new(&path, self.existing())?.write(&bytes)?;

@@ -1,4 +1,4 @@
-//! Commands for packagers and editors: completions, manual pages, the schema of the joint file.
+//! Commands for packagers and editors: completions, manual pages, schemas of the joint file and of the JSON.
 
 use crate::{
     cli::{
@@ -6,8 +6,9 @@ use crate::{
         console::{Console, Layout, Outcome, Trouble},
     },
     joint,
+    report::json,
 };
-use clap::{Args, CommandFactory};
+use clap::{Args, CommandFactory, builder::PossibleValuesParser};
 
 /// Print completions for a shell
 #[derive(Debug, Args)]
@@ -55,14 +56,26 @@ impl Man {
     }
 }
 
-/// Print the JSON Schema of the joint file
+/// Print the JSON Schema of the joint file, or with --results of what --json prints
 #[derive(Debug, Args)]
-pub struct Schema {}
+pub struct Schema {
+    /// The schema of what a command prints with --json; without a command that of all
+    #[arg(long, value_name = "COMMAND", num_args = 0..=1, default_missing_value = ALL)]
+    #[arg(value_parser = PossibleValuesParser::new(json::COMMANDS.into_iter().chain([ALL])))]
+    results: Option<String>,
+}
+
+/// The word for every command.
+const ALL: &str = "all";
 
 impl Schema {
     /// Prints the schema.
-    pub fn run(console: &mut Console) -> Result<Outcome, Trouble> {
-        console.json(&joint::schema(), Layout::Indented)?;
+    pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
+        let schema = match self.results.as_deref() {
+            None => joint::schema(),
+            Some(command) => json::schema(Some(command).filter(|command| *command != ALL)),
+        };
+        console.json(&schema, Layout::Indented)?;
         Ok(Outcome::Done)
     }
 }

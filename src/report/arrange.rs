@@ -1,12 +1,15 @@
 //! The layouts of a search, for the terminal and as JSON.
 
-use std::fmt::Write;
+mod json;
 
-use serde_json::{Value, json};
+pub(super) use json::ArrangeResult;
+pub use json::json;
+
+use std::fmt::Write;
 
 use crate::{
     joint::Limit,
-    layout::{Answer, Defaults, Goal, InCase, Row, Verdict},
+    layout::{Answer, Defaults, Goal, Row, Verdict},
     report::{
         number::{brief, four, optional, plain, wrapped},
         table::{Side, aligned},
@@ -236,68 +239,4 @@ fn best(answer: &Answer, units: System) -> String {
 fn place(length: f64) -> String {
     let text = format!("{length:.3}");
     text.trim_end_matches('0').trim_end_matches('.').to_owned()
-}
-
-/// The search as JSON, SI.
-pub fn json(answer: &Answer, defaults: &Defaults) -> Value {
-    let rows: Vec<Value> = answer.rows.iter().map(|each| row(answer, each)).collect();
-    let assumed = defaults.taken.iter();
-    json!({
-        "ringsum": env!("CARGO_PKG_VERSION"),
-        "units": "SI",
-        "title": answer.title,
-        "cases": answer.cases,
-        "screened_case": answer.screened_case,
-        "fixed_groups": answer.fixed,
-        "goal": answer.goal.name(),
-        "quantity": answer.target.measure.name(),
-        "limit": answer.target.limit.map(|(limit, bound)| json!({
-            "resistance": limit,
-            "bound": match bound { Limit::Most => "most", Limit::Least => "least" },
-        })),
-        "complete": answer.complete,
-        "layouts_by_rule": answer.rules,
-        "rows": rows,
-        "best": answer.best,
-        "passed_over": answer.passed_over,
-        "assumptions": assumed
-            .map(|(key, value)| json!({ "field": format!("arrange.{key}"), "value": value }))
-            .collect::<Vec<Value>>(),
-    })
-}
-
-fn row(answer: &Answer, row: &Row) -> Value {
-    let in_case = |(index, case): (usize, &InCase)| {
-        let band = row.band.as_ref().and_then(|band| band.get(index));
-        json!({
-            "case": answer.cases[index],
-            "source_to_sink": case.source_to_sink,
-            "nominal": case.nominal,
-            "least_force": case.least_force,
-            "largest_force": case.largest_force,
-            "low": band.map(|[low, _]| low),
-            "high": band.map(|[_, high]| high),
-        })
-    };
-    let cases = row.solution.as_ref().map(|solution| {
-        let cases = solution.cases.iter().enumerate();
-        cases.map(in_case).collect::<Vec<Value>>()
-    });
-    json!({
-        "bolts": row.places.len(),
-        "fastener": row.label,
-        "size": row.size.map(|size| size + 1),
-        "torque": row.torque,
-        "pattern": row.family.name(),
-        "moved": row.refined,
-        "mass": row.mass,
-        "heads_over_heat": row.over_heat,
-        "at": row.places,
-        "screened": row.screened,
-        "resistance": cases.as_ref().and_then(|cases| cases.get(row.case)),
-        "cases": cases,
-        "meets": verdict(row),
-        "failure": match &row.verdict { Verdict::Failed(failure) => Some(failure), _ => None },
-        "front": row.front,
-    })
 }

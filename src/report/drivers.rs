@@ -2,6 +2,8 @@
 
 use std::fmt::Write;
 
+use schemars::JsonSchema;
+use serde::Serialize;
 use serde_json::{Value, json};
 
 use crate::{
@@ -10,7 +12,7 @@ use crate::{
         table::{Side, aligned},
         text::{WIDTH, told_in, wrapped_after},
     },
-    uncertainty::{Index, Ranking, Scale, Share},
+    uncertainty::{Ranking, Scale, Share},
     units::System,
 };
 
@@ -174,43 +176,150 @@ fn percent_less(share: f64) -> String {
     }
 }
 
+/// What `drivers --json` prints of a joint.
+#[derive(Serialize, JsonSchema)]
+pub(super) struct DriversResult {
+    /// Version of the program
+    version: &'static str,
+    /// System of units of every number
+    #[schemars(extend("const" = "SI"))]
+    units: &'static str,
+    /// The joint file
+    #[serde(skip_serializing_if = "Option::is_none")]
+    #[schemars(with = "String")]
+    file: Option<String>,
+    /// Title of the joint
+    title: String,
+    /// The thermal case that stands worst
+    #[schemars(extend("enum" = ["service", "hot", "cold"]))]
+    case: &'static str,
+    /// The field of pressure
+    #[schemars(extend("enum" = ["elastic", "cone"]))]
+    field: &'static str,
+    /// How finely it is solved
+    #[schemars(extend("enum" = ["fast", "normal", "fine"]))]
+    resolution: &'static str,
+    /// The answer whose band is told
+    #[schemars(extend("enum" = [
+        "source to sink", "contact only", "added by the joint", "node to node", "rise of the source"
+    ]))]
+    of: &'static str,
+    /// Unit of the answer
+    #[schemars(extend("enum" = ["K/W", "K"]))]
+    unit: &'static str,
+    /// Draws of every band, and base points of the shares
+    draws: u32,
+    /// Seed of the draws
+    seed: u64,
+    /// Largest error of the surfaces that the draws are read from, relative to source to sink; null where every draw is solved
+    draw_error: Option<f64>,
+    /// Whether the shares are those of the logarithm of the answer or of itself
+    #[schemars(extend("enum" = ["logarithm", "itself"]))]
+    scale: &'static str,
+    /// 5 % quantile of the answer, in its unit; null without draws
+    low: Option<f64>,
+    /// The answer at nominal inputs, in its unit
+    nominal: f64,
+    /// 95 % quantile of the answer, in its unit; null without draws
+    high: Option<f64>,
+    /// Share of the variance that no input has alone, 1; null where nothing varies
+    #[schemars(with = "Option<f64>")]
+    interaction: f64,
+    /// What the order of the inputs goes by
+    #[schemars(extend("const" = "narrowing"))]
+    ranked_by: &'static str,
+    /// The inputs, the one first whose knowledge narrows the band most
+    inputs: Vec<RankedTold>,
+}
+
+/// One input and what it does to the band.
+#[derive(Serialize, JsonSchema)]
+struct RankedTold {
+    /// Its name
+    input: &'static str,
+    /// Share of the variance that goes if it alone is known
+    first: ShareTold,
+    /// Share of the variance that is left if all but it are known
+    total: ShareTold,
+    /// The answer with it alone at its 5 % and at its 95 % quantile, in the unit of the answer
+    alone: [f64; 2],
+    /// The band if it were known to be nominal, in the unit of the answer
+    known: KnownBand,
+    /// Share of the width of the band that goes when it is known, 1; null where the band has no width
+    #[schemars(with = "Option<f64>")]
+    narrowing: f64,
+    /// Whether its total share is told apart from nothing
+    told_apart: bool,
+    /// What to do about it
+    remedy: String,
+}
+
+/// A share of the variance.
+#[derive(Serialize, JsonSchema)]
+struct ShareTold {
+    /// The share, 1; null where nothing varies
+    #[schemars(with = "Option<f64>")]
+    value: f64,
+    /// Half the width of its 95 % interval, 1; null where nothing varies
+    #[schemars(with = "Option<f64>")]
+    confidence: f64,
+}
+
+impl From<&Share> for ShareTold {
+    fn from(share: &Share) -> Self {
+        Self {
+            value: share.value,
+            confidence: share.confidence,
+        }
+    }
+}
+
+/// A band with one input known.
+#[derive(Serialize, JsonSchema)]
+struct KnownBand {
+    /// 5 % quantile, in the unit of the answer; null without draws
+    low: Option<f64>,
+    /// 95 % quantile, in the unit of the answer; null without draws
+    high: Option<f64>,
+}
+
 /// The ranking in SI: shares of 1, the answer in K/W, or in K for the rise.
 pub fn json(ranking: &Ranking) -> Value {
-    let share = |share: &Share| json!({ "value": share.value, "confidence": share.confidence });
-    let index = |index: &Index| (share(&index.first), share(&index.total));
-    json!({
-        "version": env!("CARGO_PKG_VERSION"),
-        "units": "SI",
-        "title": ranking.title,
-        "case": ranking.case,
-        "field": ranking.field,
-        "resolution": ranking.resolution,
-        "of": ranking.target.name(),
-        "unit": ranking.target.unit(),
-        "draws": ranking.draws,
-        "seed": ranking.seed,
-        "draw_error": ranking.draw_error,
-        "scale": match ranking.scale {
+    let inputs = ranking.inputs.iter().map(|input| RankedTold {
+        input: input.input,
+        first: (&input.index.first).into(),
+        total: (&input.index.total).into(),
+        alone: input.alone,
+        known: KnownBand {
+            low: input.known.low,
+            high: input.known.high,
+        },
+        narrowing: input.narrowing(&ranking.band),
+        told_apart: input.index.total.is_told(),
+        remedy: input.remedy.clone(),
+    });
+    json!(DriversResult {
+        version: env!("CARGO_PKG_VERSION"),
+        units: "SI",
+        file: None,
+        title: ranking.title.clone(),
+        case: ranking.case,
+        field: ranking.field,
+        resolution: ranking.resolution,
+        of: ranking.target.name(),
+        unit: ranking.target.unit(),
+        draws: ranking.draws,
+        seed: ranking.seed,
+        draw_error: ranking.draw_error,
+        scale: match ranking.scale {
             Scale::Logarithm => "logarithm",
             Scale::Itself => "itself",
         },
-        "low": ranking.band.low,
-        "nominal": ranking.band.nominal,
-        "high": ranking.band.high,
-        "interaction": ranking.interaction,
-        "ranked_by": "narrowing",
-        "inputs": ranking.inputs.iter().map(|input| {
-            let (first, total) = index(&input.index);
-            json!({
-                "input": input.input,
-                "first": first,
-                "total": total,
-                "alone": input.alone,
-                "known": { "low": input.known.low, "high": input.known.high },
-                "narrowing": input.narrowing(&ranking.band),
-                "told_apart": input.index.total.is_told(),
-                "remedy": input.remedy,
-            })
-        }).collect::<Vec<Value>>(),
+        low: ranking.band.low,
+        nominal: ranking.band.nominal,
+        high: ranking.band.high,
+        interaction: ranking.interaction,
+        ranked_by: "narrowing",
+        inputs: inputs.collect(),
     })
 }

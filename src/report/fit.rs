@@ -1,5 +1,10 @@
 //! Fits of own measurements, as text and as JSON.
 
+mod json;
+
+pub(super) use json::{SeriesResult, UnknownResult};
+pub use json::{answer_json, series_json};
+
 use crate::{
     fit::{
         Abscissa, Branch, Hysteresis, Ordinate, PowerLaw, Series, Shape,
@@ -7,14 +12,12 @@ use crate::{
         unknown::{Answer, Question, moved},
     },
     report::{
-        json,
         number::{four, plain, wrapped},
         table::{Side, aligned},
         text::{self, Detail},
     },
     units::{Quantity, Shown, System, show},
 };
-use serde_json::{Value, json};
 use std::fmt::Write;
 
 /// Rows of the table of a law.
@@ -321,115 +324,4 @@ pub fn answer(asked: &Question, answer: &Answer, name: &str) -> String {
         text.push('\n');
     }
     text
-}
-
-/// A fitted series in SI.
-pub fn series_json(series: &Series, (name, block): (&str, &str)) -> Value {
-    let branches: Vec<Value> = series.branches.iter().map(branch_json).collect();
-    json!({
-        "ringsum": env!("CARGO_PKG_VERSION"),
-        "units": "SI",
-        "format": 1,
-        "file": name,
-        "fit": "law",
-        "abscissa": series.abscissa.name(),
-        "ordinate": measured(series.ordinate),
-        "branches": branches,
-        "hysteresis": series.hysteresis.map(|found| json!({
-            "at": found.at,
-            "ratio": found.ratio,
-            "interval": found.interval,
-        })),
-        "cautions": json::cautions(&series.cautions),
-        "measured": block,
-    })
-}
-
-fn branch_json(branch: &Branch) -> Value {
-    let outliers: Vec<Value> = branch
-        .outliers
-        .iter()
-        .map(|outlier| {
-            json!({
-                "line": branch.readings[outlier.index].line,
-                "residual": outlier.residual,
-                "threshold": outlier.threshold,
-            })
-        })
-        .collect();
-    let shape = match &branch.shape {
-        Shape::Law(law) => json!({
-            "reference": law.reference,
-            "coefficient": law.coefficient,
-            "exponent": law.exponent,
-            "covariance": law.covariance,
-            "scatter": law.scatter,
-            "degrees_of_freedom": law.degrees,
-            "chi_squared": law.agreement.map(|found| found.chi_squared),
-            "reduced_chi_squared": law.agreement.map(|found| found.reduced),
-            "bend_chance": law.bend.map(|bend| bend.chance),
-            "reach": law.reach,
-        }),
-        Shape::Table(table) => json!({ "rows": table.rows, "scatter": table.scatter }),
-    };
-    let name = match &branch.shape {
-        Shape::Law(_) => "law",
-        Shape::Table(_) => "table",
-    };
-    json!({
-        "direction": branch.direction.map(crate::fit::Direction::name),
-        "readings": branch.readings.len(),
-        "range": branch.range(),
-        "scatter_factor": branch.shape.factor(),
-        name: shape,
-        "outliers": outliers,
-    })
-}
-
-/// A fitted unknown; values in the unit they were asked in, all else in SI.
-pub fn answer_json(asked: &Question, answer: &Answer, name: &str) -> Value {
-    let value = |share: f64| asked.range.at(share);
-    let profile = &answer.profile;
-    let curve: Vec<[f64; 2]> = profile
-        .curve
-        .iter()
-        .step_by(20)
-        .map(|(share, deviance)| [value(*share), *deviance])
-        .collect();
-    json!({
-        "ringsum": env!("CARGO_PKG_VERSION"),
-        "units": "SI",
-        "format": 1,
-        "file": name,
-        "fit": "unknown",
-        "title": answer.title,
-        "field": answer.field,
-        "planes": answer.planes,
-        "unknown": asked.unknown.name(),
-        "range": [asked.range.from, asked.range.to],
-        "best": { "value": value(profile.best), "text": asked.unknown.shown(value(profile.best)) },
-        "interval": profile.interval.map(value),
-        "verdict": verdict(profile.verdict),
-        "readings": answer.readings,
-        "chi_squared": profile.chi_squared,
-        "chance": profile.chance,
-        "movement": profile.movement,
-        "deviation": { "readings": answer.measured, "other_inputs": answer.other, "together": answer.whole },
-        "contact_share": answer.contact_share,
-        "numerical_error": answer.numerical_error,
-        "interpolation": answer.interpolation,
-        "nodes": answer.nodes,
-        "inputs": answer.inputs,
-        "profile": curve,
-        "cautions": json::cautions(&answer.cautions),
-    })
-}
-
-fn verdict(verdict: Verdict) -> &'static str {
-    match verdict {
-        Verdict::Determined => "determined",
-        Verdict::BelowOnly => "bounded-below",
-        Verdict::AboveOnly => "bounded-above",
-        Verdict::Undetermined => "not-determined",
-    }
 }

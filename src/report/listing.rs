@@ -8,6 +8,8 @@ use crate::{
         table::{Side, aligned},
     },
 };
+use schemars::JsonSchema;
+use serde::Serialize;
 use serde_json::{Value, json};
 
 /// One kind of catalogue record, ready to be filtered and shown.
@@ -87,41 +89,94 @@ pub fn json(listings: &[Listing]) -> Value {
         "units": "SI", "format": FORMAT, "kinds": kinds })
 }
 
+/// Whether a file was accepted, and its faults: what `check --json` prints of it, and every other command
+/// of a file at fault.
+#[derive(Serialize, JsonSchema)]
+pub(super) struct Checked<'a> {
+    /// Version of the program
+    ringsum: &'static str,
+    /// Number of this contract
+    #[schemars(extend("const" = FORMAT))]
+    format: u32,
+    /// The file
+    file: &'a str,
+    /// Whether it has no faults
+    ok: bool,
+    /// Its faults, all at once
+    faults: Vec<FaultTold<'a>>,
+}
+
+/// A fault and its place.
+#[derive(Serialize, JsonSchema)]
+struct FaultTold<'a> {
+    /// Stable code, which `ringsum explain` explains
+    code: &'static str,
+    /// The file, or the override at fault
+    file: &'a str,
+    /// Line, counted from 1
+    line: usize,
+    /// Column in characters, counted from 1
+    column: usize,
+    /// What was found and what is expected
+    message: &'a str,
+    /// What the place should hold; empty where the message says it
+    expected: &'a str,
+    /// How to mend it; null where nothing more is to be said
+    help: Option<&'a str>,
+}
+
+/// A joint that was read but has no answer.
+#[derive(Serialize, JsonSchema)]
+pub(super) struct Unanswered<'a> {
+    /// The joint file
+    file: &'a str,
+    /// There is no answer
+    #[schemars(extend("const" = false))]
+    ok: bool,
+    /// Why, in a sentence
+    failure: &'a str,
+}
+
+/// A joint that was read but has no answer, with the reason.
+pub fn unanswered(file: &str, failure: &str) -> Value {
+    json!(Unanswered {
+        file,
+        ok: false,
+        failure,
+    })
+}
+
 /// A file without faults.
 pub fn accepted(path: &str) -> Value {
-    checked(path, &[])
+    checked(path, Vec::new())
 }
 
 /// The faults of one file, with line and column counted from 1. A fault in an override names the
 /// override as its file.
 pub fn faults(path: &str, found: &Faults) -> Value {
-    let list: Vec<Value> = found
-        .faults
-        .iter()
-        .map(|(source, fault)| {
-            let (name, text) = &found.sources[*source];
-            let (line, column) = place(text, fault.span.start);
-            json!({
-                "code": fault.code,
-                "file": if name.is_empty() { path } else { name },
-                "line": line,
-                "column": column,
-                "message": fault.message,
-                "expected": fault.expected,
-                "help": fault.help,
-            })
-        })
-        .collect();
-    checked(path, &list)
+    let told = found.faults.iter().map(|(source, fault)| {
+        let (name, text) = &found.sources[*source];
+        let (line, column) = place(text, fault.span.start);
+        FaultTold {
+            code: fault.code,
+            file: if name.is_empty() { path } else { name },
+            line,
+            column,
+            message: &fault.message,
+            expected: &fault.expected,
+            help: fault.help.as_deref(),
+        }
+    });
+    checked(path, told.collect())
 }
 
-fn checked(path: &str, faults: &[Value]) -> Value {
-    json!({
-        "ringsum": env!("CARGO_PKG_VERSION"),
-        "format": FORMAT,
-        "file": path,
-        "ok": faults.is_empty(),
-        "faults": faults,
+fn checked(file: &str, faults: Vec<FaultTold>) -> Value {
+    json!(Checked {
+        ringsum: env!("CARGO_PKG_VERSION"),
+        format: FORMAT,
+        file,
+        ok: faults.is_empty(),
+        faults,
     })
 }
 
