@@ -242,20 +242,14 @@ fn keys(schema: &Value) -> BTreeSet<(String, String)> {
 
 /// Follows a value along its schema and notes the keys it holds.
 fn walk(schema: &Value, of: &Value, value: &Value, seen: &mut BTreeSet<(String, String)>) {
-    if let Some(name) = of["$ref"]
-        .as_str()
-        .and_then(|at| at.strip_prefix("#/$defs/"))
+    let name = of["$ref"].as_str();
+    if let Some(name) = name.and_then(|at| at.strip_prefix("#/$defs/"))
+        && let Some(parts) = value.as_object()
     {
-        if let Some(parts) = value.as_object() {
-            for (key, part) in parts {
-                seen.insert((name.to_owned(), key.clone()));
-                walk(
-                    schema,
-                    &schema["$defs"][name]["properties"][key],
-                    part,
-                    seen,
-                );
-            }
+        for (key, part) in parts {
+            seen.insert((name.to_owned(), key.clone()));
+            let form = &schema["$defs"][name]["properties"][key];
+            walk(schema, form, part, seen);
         }
     }
     for form in of["anyOf"].as_array().into_iter().flatten() {

@@ -40,19 +40,16 @@ pub fn of_joint(joint: &Joint, fields: &Fields) -> Vec<(&'static str, Drawing)> 
     let furnish = |map: PlanMap| furnished(map, joint, (nominal, field));
     let title = title(joint, fields.interface);
     let peak = peak(nominal, fields.interface);
-    let pressure = match PlanPair::of(&title, field) {
-        Some(mut pair) => {
-            pair.pressure.peak = peak;
-            let pair = pair.furnished(furnish);
-            (PRESSURE_AND_GAP, Drawing::PressureAndGap(Box::new(pair)))
-        }
-        None => {
-            let map = PlanMap {
-                peak,
-                ..PlanMap::pressure(&title, field)
-            };
-            (PRESSURE, Drawing::Plan(Box::new(furnish(map))))
-        }
+    let pressure = if let Some(mut pair) = PlanPair::of(&title, field) {
+        pair.pressure.peak = peak;
+        let pair = pair.furnished(furnish);
+        (PRESSURE_AND_GAP, Drawing::PressureAndGap(Box::new(pair)))
+    } else {
+        let map = PlanMap {
+            peak,
+            ..PlanMap::pressure(&title, field)
+        };
+        (PRESSURE, Drawing::Plan(Box::new(furnish(map))))
     };
     let conductance = Drawing::Plan(Box::new(furnish(PlanMap::conductance(&title, field))));
     let heading = title.clone();
