@@ -1,6 +1,12 @@
 //! What is fed to each reader: by the fuzz targets made-up inputs, by the tests the cases kept.
 
-use ringsum::{diagnostic::Colour, fit, joint, units};
+use ringsum::{
+    diagnostic::Colour,
+    fit,
+    joint::{self, Outline},
+    units,
+};
+use std::sync::LazyLock;
 
 const BOWED: &str = include_str!("../joints/bowed_base.toml");
 const MAP: &str = include_str!("../joints/bowed_base_flatness.csv");
@@ -16,8 +22,11 @@ pub fn joint_file(text: &str) {
 
 /// The flatness map of a plate.
 pub fn flatness(text: &str) {
-    let read = joint::read_with_files(BOWED, &[], &|_| Ok(text.to_owned()));
-    drop(read);
+    static OUTLINE: LazyLock<Outline> = LazyLock::new(|| {
+        let read = joint::read_with_files(BOWED, &[], &|_| Ok(MAP.to_owned()));
+        read.expect("a shipped joint").plates[0].outline.clone()
+    });
+    drop(joint::read_flatness(text, Some(&OUTLINE)));
 }
 
 /// A table of readings for `fit`.

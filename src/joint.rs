@@ -69,7 +69,7 @@ use crate::{
 
 pub use checked::*;
 pub use finishes::slope_from_roughness;
-pub use maps::{Files, LONGEST_TABLE};
+pub use maps::{Files, LONGEST_TABLE, read_flatness};
 pub use mass::Mass;
 pub use missing::NotLeftOut;
 pub use radiation::{RadiatingBack, STEFAN_BOLTZMANN, radiative_film};

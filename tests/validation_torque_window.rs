@@ -323,7 +323,10 @@ fn the_best_torque_keeps_the_faces_together() {
     assert!((best - least).abs() < 1e-9, "{best} {least}");
     assert_eq!(sweep.at_limit.map(|limit| limit.torque), sweep.best);
     let text = report::torque(&sweep);
-    assert!(text.contains("highest source to sink that separation allows"), "{text}");
+    assert!(
+        text.contains("highest source to sink that separation allows"),
+        "{text}"
+    );
     // With rows between the limits too.
     let fine = swept(&resisting("300 N"), 41, 0.9).best.expect("a torque");
     assert!((fine - least).abs() < 1e-9, "{fine} {least}");

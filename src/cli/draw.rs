@@ -51,9 +51,9 @@ pub struct Draw {
     interface: usize,
     /// Write the maps as tables too, SI: one CSV of every interface in every case
     ///
-    /// Values are read between the columns of the solution, each for itself. Beside the bolts, where they
-    /// change fastest, conductance times temperature difference does not add up to the heat: take that from
-    /// the results or from `estimate --nodes`.
+    /// Values are read between the columns of the solution, each for itself. `flux_W_per_m2` times the area
+    /// of a point adds up to the heat, less what shanks carry. Conductance times temperature difference
+    /// does not beside the bolts, where both change fastest.
     #[arg(long)]
     maps: bool,
     #[command(flatten)]

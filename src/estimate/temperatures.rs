@@ -29,7 +29,9 @@ pub struct Temperatures {
 pub struct FacePoint {
     /// Temperature of the warm and of the cold face, per watt above the mean sink surface, K/W.
     pub rises: [f64; 2],
-    /// Heat flux across the interface over its mean over all of the interface, 1.
+    /// Heat flux across the interface per watt through the joint, 1/m².
+    pub flux: f64,
+    /// The same over its mean over all of the interface, 1.
     pub concentration: f64,
 }
 
@@ -43,6 +45,11 @@ pub struct HeatMap {
     /// Temperature of the warm and of the cold face at cell centres, row by row from below, per
     /// watt above the mean sink surface, K/W; NaN off the faces.
     pub rises: [Vec<f64>; 2],
+    /// Heat flux per watt through the joint, 1/m²; likewise.
+    ///
+    /// Times the area of a cell it adds up to the share of the heat that crosses there, the better
+    /// the more cells there are; shanks of bolts carry the rest.
+    pub flux: Vec<f64>,
     /// Heat flux over its mean, 1; likewise.
     pub concentration: Vec<f64>,
 }
@@ -81,6 +88,7 @@ pub fn heat_map(
             values(&|point| point.rises[0]),
             values(&|point| point.rises[1]),
         ],
+        flux: values(&|point| point.flux),
         concentration: values(&|point| point.concentration),
     }))
 }

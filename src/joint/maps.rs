@@ -91,6 +91,14 @@ impl<'f> Tables<'f> {
     }
 }
 
+/// Reads a flatness map by itself, against the outline of its plate where there is one.
+///
+/// Errors: every fault found; spans count bytes of `text`.
+pub fn read_flatness(text: &str, outline: Option<&Outline>) -> Result<FlatnessMap, Vec<Fault>> {
+    let mut faults = Vec::new();
+    map(text, outline, &mut faults).ok_or(faults)
+}
+
 fn map(text: &str, outline: Option<&Outline>, faults: &mut Vec<Fault>) -> Option<FlatnessMap> {
     if text.len() > LONGEST_TABLE {
         faults.push(

@@ -112,6 +112,26 @@ mod tests {
     }
 
     #[test]
+    fn both_stresses_use_the_strength_together() {
+        let stress = BrittleStress {
+            seat: Some(30e6),
+            bending: Some(20e6),
+            strength: Some(200e6),
+        };
+        assert_eq!(stress.used(), Some(0.25));
+        let unbent = BrittleStress {
+            bending: None,
+            ..stress
+        };
+        assert_eq!(unbent.used(), Some(0.15));
+        let unstated = BrittleStress {
+            strength: None,
+            ..stress
+        };
+        assert_eq!(unstated.used(), None);
+    }
+
+    #[test]
     fn bending_takes_its_part_of_what_the_seat_may_bear() {
         let mut plate = ceramic();
         assert_eq!(seat_limit(&plate, None), None);

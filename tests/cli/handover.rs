@@ -220,6 +220,15 @@ fn maps_carry_the_clamp_force_and_the_drop_between_the_faces() {
         // Likewise.
         assert!((mean / told - 1.0).abs() < 0.05, "{mean} K/W of {told} K/W");
         let heat = object["heat"].as_f64().unwrap();
+        let crossing: f64 = rows
+            .iter()
+            .map(|row| number(row, "flux_W_per_m2") * area)
+            .sum();
+        // Likewise, and shanks carry a share that is less than that.
+        assert!(
+            (crossing / heat - 1.0).abs() < 0.02,
+            "{crossing} W of {heat} W"
+        );
         let sink = case["sink_temperature"].as_f64().unwrap();
         for row in &rows {
             let above = number(row, "warm_face_K") - sink;
@@ -227,4 +236,37 @@ fn maps_carry_the_clamp_force_and_the_drop_between_the_faces() {
             assert!((above - heat * number(row, "warm_face_K_per_W")).abs() < 1e-9);
         }
     }
+}
+
+/// A round pair is solved in radius and height, and its map reads the same.
+#[test]
+fn the_map_of_a_round_pair_carries_its_heat() {
+    let folder = tempdir().unwrap();
+    let out = folder.path().join("maps");
+    ringsum()
+        .args(["draw", "tests/data/joints/round_single.toml"])
+        .args(["--resolution", "fast", "--maps", "--out"])
+        .arg(&out)
+        .assert()
+        .code(0);
+    let mut maps = 0;
+    for name in names(&out) {
+        if !name.ends_with(".csv") {
+            continue;
+        }
+        maps += 1;
+        let rows = rows(&out.join(name));
+        let mut places: Vec<f64> = rows.iter().map(|row| number(row, "x_m")).collect();
+        places.sort_by(f64::total_cmp);
+        places.dedup();
+        let step = places
+            .windows(2)
+            .map(|pair| pair[1] - pair[0])
+            .fold(f64::INFINITY, f64::min);
+        let shares = rows.iter().map(|row| number(row, "flux_per_m2"));
+        let crossing = shares.sum::<f64>() * step * step;
+        // The rim of the hole, where flux is highest, is told by squares.
+        assert!((crossing - 1.0).abs() < 0.05, "{crossing}");
+    }
+    assert!(maps > 0);
 }

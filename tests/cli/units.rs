@@ -169,7 +169,10 @@ fn the_page_tells_inches_and_so_does_what_is_drawn() {
     assert!(page.contains("Torque, in·lbf"));
     let figures: Vec<&str> = page.split("<svg").skip(1).collect();
     assert!(figures.iter().any(|figure| figure.contains("in·lbf")));
-    for figure in figures.iter().filter_map(|rest| rest.split("</svg>").next()) {
+    for figure in figures
+        .iter()
+        .filter_map(|rest| rest.split("</svg>").next())
+    {
         // Heat stays in K/W; lengths, torques and pressures do not stay metric.
         for unit in ["N·m<", " mm<", "MPa<", "µm<", "°C<"] {
             assert!(!figure.contains(unit), "{unit}");

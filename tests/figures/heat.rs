@@ -17,6 +17,7 @@ fn heat_map() -> HeatMap {
         window: field.window,
         size: field.size,
         rises: [warm.clone(), warm.iter().map(|rise| 0.3 - rise).collect()],
+        flux: field.pressure.iter().map(|p| 30.0 + 1e-4 * p).collect(),
         concentration: field.pressure.iter().map(|p| 0.3 + 1e-6 * p).collect(),
     }
 }

@@ -17,7 +17,8 @@ pub struct Condition {
 /// Every point of a map that lies on both faces, row by row from below.
 ///
 /// Temperatures of the faces are empty where no heat is stated, and with the gap where the field
-/// knows none; `K_per_W` is the rise above the mean sink surface per watt.
+/// knows none; `K_per_W` is the rise above the mean sink surface per watt. `flux` is what crosses
+/// between the faces, in W/m² and per watt through the joint, 1/m².
 pub fn map(field: &FieldMap, heat: Option<&HeatMap>, condition: Condition) -> String {
     let names = [
         "x_m",
@@ -29,6 +30,8 @@ pub fn map(field: &FieldMap, heat: Option<&HeatMap>, condition: Condition) -> St
         "cold_face_K",
         "warm_face_K_per_W",
         "cold_face_K_per_W",
+        "flux_W_per_m2",
+        "flux_per_m2",
     ];
     let mut text = line(&names.map(str::to_owned));
     let [columns, rows] = field.size;
@@ -43,6 +46,7 @@ pub fn map(field: &FieldMap, heat: Option<&HeatMap>, condition: Condition) -> St
         };
         let rises = [0, 1].map(|face| heat.map(|heat| heat.rises[face][index]));
         let warmth = rises.map(|rise| Some(condition.sink + rise? * condition.heat?));
+        let flux = heat.map(|heat| heat.flux[index]);
         let cells = [
             Some(at(left, right, (index % columns, columns))),
             Some(at(lower, upper, (index / columns, rows))),
@@ -53,6 +57,8 @@ pub fn map(field: &FieldMap, heat: Option<&HeatMap>, condition: Condition) -> St
             warmth[1],
             rises[0],
             rises[1],
+            flux.and_then(|flux| Some(flux * condition.heat?)),
+            flux,
         ];
         text.push_str(&line(&cells.map(number)));
     }

@@ -87,6 +87,7 @@ pub(super) fn face_points(
             let flux = over(&|column| weights[column] > 0.0, &|column| part.flux[column])?;
             Some(FacePoint {
                 rises: [face(0, part.meeting.upper)?, face(1, part.meeting.lower)?],
+                flux,
                 concentration: flux / mean,
             })
         })

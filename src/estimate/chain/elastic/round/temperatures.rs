@@ -63,9 +63,13 @@ pub(super) fn face_points(
         .map(|[x, y]| {
             let radius = (x - shape.at[0]).hypot(y - shape.at[1]);
             let on_the_faces = (shape.hole_radius..=shape.rim_radius).contains(&radius);
-            on_the_faces.then(|| FacePoint {
-                rises: [0, 1].map(|plate| linear(&faces[plate], radius)),
-                concentration: linear(flux, radius) / mean,
+            on_the_faces.then(|| {
+                let flux = linear(flux, radius);
+                FacePoint {
+                    rises: [0, 1].map(|plate| linear(&faces[plate], radius)),
+                    flux,
+                    concentration: flux / mean,
+                }
             })
         })
         .collect()
