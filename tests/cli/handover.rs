@@ -251,11 +251,12 @@ fn the_map_of_a_round_pair_carries_its_heat() {
         .code(0);
     let mut maps = 0;
     for name in names(&out) {
-        if !name.ends_with(".csv") {
+        let file = out.join(name);
+        if file.extension().is_none_or(|ending| ending != "csv") {
             continue;
         }
         maps += 1;
-        let rows = rows(&out.join(name));
+        let rows = rows(&file);
         let mut places: Vec<f64> = rows.iter().map(|row| number(row, "x_m")).collect();
         places.sort_by(f64::total_cmp);
         places.dedup();
