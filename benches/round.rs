@@ -12,7 +12,7 @@ mod answer;
 use std::{hint::black_box, time::Instant};
 
 use ringsum::{
-    pressure::round::{Faces, Head, Problem, Solution, solve},
+    pressure::round::{FaceFriction, HeadModel, Problem, Solution, solve},
     resistance::round as heat,
 };
 use serde_json::json;
@@ -43,8 +43,8 @@ fn main() {
         thickness: [1.0, 1.0],
         youngs_modulus: [1.0, 1.0],
         poisson: [0.33, 0.33],
-        head: Head::Uniform,
-        faces: Faces::Frictionless,
+        head: HeadModel::Uniform,
+        faces: FaceFriction::Frictionless,
         tolerance: TOLERANCE,
     };
     let unlike = Problem {
@@ -54,11 +54,11 @@ fn main() {
         ..equal
     };
     let rigid = Problem {
-        head: Head::Rigid,
+        head: HeadModel::Rigid,
         ..equal
     };
     let stuck = Problem {
-        faces: Faces::Stuck,
+        faces: FaceFriction::Stuck,
         ..unlike
     };
     println!("contact of a round pair to {TOLERANCE} b, median and best of {RUNS} runs");

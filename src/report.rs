@@ -3,6 +3,7 @@
 pub mod arrange;
 pub mod card;
 pub mod catalogue;
+pub mod codes;
 pub mod comparison;
 pub mod csv;
 pub mod drivers;

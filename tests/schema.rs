@@ -88,6 +88,7 @@ fn runs() -> Vec<(&'static str, &'static str, Vec<String>)> {
         run("drivers", "", &format!("{joint} --field cone --draws 256"));
         run("check", "Checked", &joint);
     }
+    run("explain", "CodeTold", "preload/over-yield");
     let solved = "--resolution fast --draws";
     for (joint, draws) in [
         ("joints/converter_box.toml", "0"),
@@ -153,6 +154,8 @@ fn form(command: &str, value: &Value) -> &'static str {
         "drivers" => "DriversResult",
         "arrange" => "ArrangeResult",
         "compare" => "CompareResult",
+        "explain" if value.get("entries").is_some() => "CodesTold",
+        "explain" => "CodeTold",
         "fit" if value["fit"] == "law" => "SeriesResult",
         "fit" => "UnknownResult",
         _ => "Checked",
@@ -282,6 +285,10 @@ fn every_answer_is_what_the_schema_says_and_every_key_is_in_some() {
             walk(&schema, &root, &value, &mut seen);
         }
     }
+    let codes = printed(&["explain", "--json"]).remove(0);
+    assert_eq!(faults(&schema, "CodesTold", &codes), [""; 0]);
+    let root = serde_json::json!({ "$ref": "#/$defs/CodesTold" });
+    walk(&schema, &root, &codes, &mut seen);
     let fault = printed(&["check", "joints/nothing_here.toml", "--json"]).remove(0);
     let root = serde_json::json!({ "$ref": "#/$defs/Checked" });
     walk(&schema, &root, &fault, &mut seen);

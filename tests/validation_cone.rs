@@ -11,7 +11,7 @@ use ringsum::{
     numerics::{quadrature, sampling::Sobol},
     pressure::{
         Pair, cone,
-        round::{Faces, Head, Problem, solve},
+        round::{FaceFriction, HeadModel, Problem, solve},
     },
 };
 
@@ -26,8 +26,8 @@ fn problem(at: &[f64]) -> Problem {
         thickness: [thin, thin * between(at[2], 1.0, 3.0)],
         youngs_modulus: [1.0, between(at[3], 1.0 / 2.0, 3.0)],
         poisson: [0.33; 2],
-        head: Head::Uniform,
-        faces: Faces::Frictionless,
+        head: HeadModel::Uniform,
+        faces: FaceFriction::Frictionless,
         tolerance: 0.003,
     }
 }

@@ -11,8 +11,8 @@ use ringsum::{
     estimate::{self, Chain, Choice, Realisation, State, Watch},
     joint::{self, Joint},
     pressure::elastic::{
-        Annulus, Body, Bolt, Compliance, End, Faces, Field, Fineness, Head, Interface, Layer,
-        Problem, solve,
+        Annulus, Body, Bolt, Compliance, End, FaceFriction, Field, Fineness, HeadModel, Interface,
+        Layer, Problem, solve,
     },
     resistance::columns::{Conductivity, Sink, Source, Stack, Terminals, Zone, nodal, solve_both},
 };
@@ -58,7 +58,7 @@ fn on_columns(fineness: Fineness) -> Field {
         bodies: vec![body(), body()],
         interfaces: vec![Interface {
             gap: &flat,
-            faces: Faces::Frictionless,
+            faces: FaceFriction::Frictionless,
             compliance: Compliance::Hard,
         }],
         bolts: vec![Bolt {
@@ -69,7 +69,7 @@ fn on_columns(fineness: Fineness) -> Field {
             end: End::Nut(seat),
         }],
         stops: [Vec::new(), Vec::new()],
-        head: Head::Uniform,
+        head: HeadModel::Uniform,
         fineness,
         most_bytes: MEMORY,
         progress: None,

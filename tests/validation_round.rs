@@ -5,7 +5,7 @@ mod evidence;
 
 use std::{collections::BTreeMap, f64::consts::PI};
 
-use ringsum::pressure::round::{Faces, Head, Problem, Solution, solve};
+use ringsum::pressure::round::{FaceFriction, HeadModel, Problem, Solution, solve};
 use serde::Deserialize;
 
 #[derive(Deserialize)]
@@ -50,13 +50,13 @@ impl Case {
             youngs_modulus: self.E,
             poisson: self.nu,
             head: match self.head.as_str() {
-                "rigid" => Head::Rigid,
-                _ => Head::Uniform,
+                "rigid" => HeadModel::Rigid,
+                _ => HeadModel::Uniform,
             },
             faces: if self.stick {
-                Faces::Stuck
+                FaceFriction::Stuck
             } else {
-                Faces::Frictionless
+                FaceFriction::Frictionless
             },
             tolerance: 0.003,
         }
@@ -175,13 +175,13 @@ fn layer_radii_are_met() {
 // in a compliance that is a hundred times its local part.
 #[test]
 fn equal_rims_carry_the_mean_pressure() {
-    for faces in [Faces::Frictionless, Faces::Stuck] {
+    for faces in [FaceFriction::Frictionless, FaceFriction::Stuck] {
         let mut problem = Problem {
             rim_radius: 1.0,
             faces,
             ..unlike()
         };
-        if faces == Faces::Stuck {
+        if faces == FaceFriction::Stuck {
             // Stuck plates bulge together only when their ν/E agree.
             problem.poisson = [0.1, 0.3];
         }
@@ -219,8 +219,8 @@ fn contact_does_not_depend_on_the_force() {
 
 #[test]
 fn plates_can_be_exchanged() {
-    for faces in [Faces::Frictionless, Faces::Stuck] {
-        for head in [Head::Uniform, Head::Rigid] {
+    for faces in [FaceFriction::Frictionless, FaceFriction::Stuck] {
+        for head in [HeadModel::Uniform, HeadModel::Rigid] {
             let one = Problem {
                 faces,
                 head,
@@ -251,7 +251,7 @@ fn sticking_does_not_matter_between_equal_plates() {
         let problem = case(id);
         let free = solved(&problem);
         let stuck = solved(&Problem {
-            faces: Faces::Stuck,
+            faces: FaceFriction::Stuck,
             ..problem
         });
         let off = stuck.contact_radius - free.contact_radius;

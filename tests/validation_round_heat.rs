@@ -9,7 +9,7 @@ use bessel::bessel;
 use ringsum::{
     conductance::{Face, GapGas, Hardness, Interface, Local},
     joint,
-    pressure::round::{self, Faces, Head, Solution},
+    pressure::round::{self, FaceFriction, HeadModel, Solution},
     resistance::round::{
         Condensed, Disc, Heat, Inlet, Law, Outlet, Patch, Problem, condense, heat_under,
     },
@@ -85,13 +85,13 @@ impl Contact {
             youngs_modulus: self.E,
             poisson: self.nu,
             head: match self.head.as_str() {
-                "rigid" => Head::Rigid,
-                _ => Head::Uniform,
+                "rigid" => HeadModel::Rigid,
+                _ => HeadModel::Uniform,
             },
             faces: if self.stick {
-                Faces::Stuck
+                FaceFriction::Stuck
             } else {
-                Faces::Frictionless
+                FaceFriction::Frictionless
             },
             tolerance: 0.001,
         })
@@ -691,8 +691,8 @@ fn aluminium() -> (Solution, Condensed) {
         thickness: [5e-3; 2],
         youngs_modulus: [68.9e9; 2],
         poisson: [0.33; 2],
-        head: Head::Uniform,
-        faces: Faces::Frictionless,
+        head: HeadModel::Uniform,
+        faces: FaceFriction::Frictionless,
         tolerance: 0.001,
     })
     .expect("the contact converges");

@@ -5,17 +5,10 @@ use crate::{
         chain,
         console::{Console, Layout, Outcome, Trouble},
     },
-    diagnostic::registry::{self, Entry, Gravity, Kind},
-    report::{
-        json::FORMAT,
-        number::wrapped,
-        table::{Side, aligned},
-        text::WIDTH,
-    },
+    diagnostic::registry,
+    report::codes,
 };
 use clap::Args;
-use serde_json::{Value, json};
-use std::fmt::Write;
 
 /// Explain a caution, a fault or a law by its code, or a topic such as joint-file
 #[derive(Debug, Args)]
@@ -34,13 +27,9 @@ impl Explain {
         let entries = registry::entries();
         let Some(code) = self.code else {
             if self.json {
-                let list: Vec<Value> = entries.iter().map(entry).collect();
-                let object = json!({
-                    "ringsum": env!("CARGO_PKG_VERSION"), "format": FORMAT, "entries": list,
-                });
-                console.json(&object, Layout::Indented)?;
+                console.json(&codes::json(entries), Layout::Indented)?;
             } else {
-                console.result(&index(entries))?;
+                console.result(&codes::index(entries))?;
             }
             return Ok(Outcome::Done);
         };
@@ -55,79 +44,10 @@ impl Explain {
             ));
         };
         if self.json {
-            console.json(&entry(found), Layout::Indented)?;
+            console.json(&codes::entry_json(found), Layout::Indented)?;
         } else {
-            console.result(&page(found))?;
+            console.result(&codes::page(found))?;
         }
         Ok(Outcome::Done)
     }
-}
-
-fn entry(entry: &Entry) -> Value {
-    json!({
-        "code": entry.code,
-        "kind": kind(entry.kind),
-        "title": entry.title,
-        "meaning": entry.meaning,
-        "remedy": entry.remedy,
-        "law": entry.law.map(|law| json!({
-            "equation": law.equation, "range": law.range, "source": law.source,
-        })),
-    })
-}
-
-fn kind(kind: Kind) -> &'static str {
-    match kind {
-        Kind::Fault => "fault",
-        Kind::Caution(Gravity::Grave) => "grave caution",
-        Kind::Caution(Gravity::Range) => "caution, out of range",
-        Kind::Caution(Gravity::Note) => "caution",
-        Kind::Caution(Gravity::Standing) => "caution that goes with every estimate",
-        Kind::Law => "law",
-        Kind::Topic => "topic",
-    }
-}
-
-fn index(entries: &[Entry]) -> String {
-    let rows: Vec<Vec<String>> = entries
-        .iter()
-        .map(|entry| {
-            vec![
-                entry.code.to_owned(),
-                kind(entry.kind).to_owned(),
-                entry.title.to_owned(),
-            ]
-        })
-        .collect();
-    aligned(
-        &[
-            ("code", Side::Left),
-            ("kind", Side::Left),
-            ("title", Side::Left),
-        ],
-        &rows,
-    )
-}
-
-fn page(entry: &Entry) -> String {
-    let mut text = format!("{} ({}): {}\n", entry.code, kind(entry.kind), entry.title);
-    for part in [entry.meaning, entry.remedy] {
-        for paragraph in part.split("\n\n").filter(|part| !part.trim().is_empty()) {
-            text.push('\n');
-            text.push_str(&wrapped(paragraph, WIDTH, 0));
-            text.push('\n');
-        }
-    }
-    if let Some(law) = entry.law {
-        text.push('\n');
-        for (name, value) in [
-            ("law", law.equation),
-            ("range", law.range),
-            ("source", law.source),
-        ] {
-            let body = wrapped(value, WIDTH - 8, 0).replace('\n', "\n        ");
-            let _ = writeln!(text, "{name:<8}{body}");
-        }
-    }
-    text
 }

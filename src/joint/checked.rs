@@ -341,7 +341,7 @@ pub struct Contact {
 pub enum HeadModel {
     /// One pressure over the seat.
     Uniform,
-    /// The seat stays plane and moves as a whole.
+    /// One displacement where it touches, without friction; it may lift off but not tilt.
     Rigid,
 }
 
@@ -350,7 +350,8 @@ pub enum HeadModel {
 pub enum FaceFriction {
     /// They slide freely.
     Frictionless,
-    /// They stick where they touch.
+    /// They do not slide where they touch; in a round pair but for the last hundredths of the thickness
+    /// before the contact edge.
     Stuck,
 }
 

@@ -3,6 +3,9 @@
 /// Iterations allowed: bisection alone reaches the last bit of any bracket in fewer.
 const ITERATIONS: usize = 200;
 
+/// Halvings of a bracket: 2⁻⁶⁰ is 1e-18.
+const HALVINGS: usize = 60;
+
 /// A root of `f` between `low` and `high`, to within `tolerance` of the argument.
 ///
 /// Brent's method: inverse quadratic or secant steps where they help, bisection where they do
@@ -62,6 +65,27 @@ pub fn bracketed(f: impl Fn(f64) -> f64, low: f64, high: f64, tolerance: f64) ->
     None
 }
 
+/// Where `holds` ends between `low`, where it is true, and `high`, where it is not.
+///
+/// Bisection down to the spacing of f64, or to 1e-18 of the bracket: for functions with steps and flat
+/// stretches. `low` or `high` itself where it never ends, or ends at once.
+///
+/// Checked: `a_bracket_is_halved_down_to_its_last_bit`.
+pub fn halved(mut holds: impl FnMut(f64) -> bool, mut low: f64, mut high: f64) -> f64 {
+    for _ in 0..HALVINGS {
+        let middle = f64::midpoint(low, high);
+        if middle <= low || high <= middle {
+            break;
+        }
+        if holds(middle) {
+            low = middle;
+        } else {
+            high = middle;
+        }
+    }
+    f64::midpoint(low, high)
+}
+
 #[derive(Clone, Copy)]
 struct Point {
     x: f64,
@@ -109,6 +133,30 @@ mod tests {
         );
         assert!((found.expect("bracketed") - 0.7390851332151607).abs() < 1e-14);
         assert!(calls.get() <= 12, "{} calls", calls.get());
+    }
+
+    // One step of f64 at the place; 1e-18 of the bracket where that is zero.
+    #[test]
+    fn a_bracket_is_halved_down_to_its_last_bit() {
+        for place in [0.3, 1.0 / 3.0, 7e-5, 0.999] {
+            let found = halved(|x| x < place, 0.0, 1.0);
+            assert!(
+                (found - place).abs() <= f64::EPSILON * place.max(1e-2),
+                "{place}"
+            );
+        }
+        assert!(halved(|_| false, 0.0, 1.0) < 1e-18);
+        assert!(halved(|_| true, 0.0, 1.0) > 1.0 - 1e-15);
+        let mut calls = 0;
+        halved(
+            |x| {
+                calls += 1;
+                x < 0.3
+            },
+            0.0,
+            1.0,
+        );
+        assert!((52..=56).contains(&calls), "{calls} calls");
     }
 
     #[test]

@@ -5,6 +5,7 @@ use std::f64::consts::PI;
 use crate::{
     diagnostic::Caution,
     joint::{ConeRule, ConeShape},
+    numerics::roots,
     pressure::beta::{beta_share, ln_beta},
 };
 
@@ -293,17 +294,8 @@ impl Cone {
 
     /// Radius inside which a share of the force is carried, m.
     pub fn radius_holding(&self, share: f64) -> f64 {
-        let (mut low, mut high) = (self.hole_radius, self.contact_radius);
-        // Sixty halvings reach the spacing of f64.
-        for _ in 0..60 {
-            let middle = 0.5 * (low + high);
-            if self.carried_within(middle) < share {
-                low = middle;
-            } else {
-                high = middle;
-            }
-        }
-        0.5 * (low + high)
+        let inside = |radius: f64| self.carried_within(radius) < share;
+        roots::halved(inside, self.hole_radius, self.contact_radius)
     }
 }
 

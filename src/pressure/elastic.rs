@@ -11,11 +11,12 @@ mod symmetry;
 mod system;
 mod table;
 
+pub use crate::joint::{FaceFriction, HeadModel};
 pub use field::{FaceField, Field, Health, Place};
 pub use mesh::{Mesh, MeshBody, MeshFace, MeshLayer};
 pub use problem::{
-    Annulus, Body, Bolt, Compliance, Cover, End, Faces, Fineness, Head, Height, Inlay, Interface,
-    Layer, Problem, Progress, Stage, Through,
+    Annulus, Body, Bolt, Compliance, Cover, End, Fineness, Height, Inlay, Interface, Layer,
+    Problem, Progress, Stage, Through,
 };
 pub use resolution::Size;
 pub use table::Table;

@@ -15,6 +15,7 @@ mod readings;
 mod search;
 mod solution;
 
+pub use crate::joint::{FaceFriction, HeadModel};
 pub use solution::{Health, Solution};
 
 use contact::{Contact, contact};
@@ -38,29 +39,11 @@ pub struct Problem {
     /// Poisson's ratio ν of both plates, 1; below 0.5.
     pub poisson: [f64; 2],
     /// How the heads press.
-    pub head: Head,
+    pub head: HeadModel,
     /// How the faces meet.
-    pub faces: Faces,
+    pub faces: FaceFriction,
     /// Error allowed in the contact radius, in bearing radii.
     pub tolerance: f64,
-}
-
-/// How a head presses on its annulus.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
-pub enum Head {
-    /// One pressure everywhere.
-    Uniform,
-    /// One displacement where it touches, without friction; it may lift off.
-    Rigid,
-}
-
-/// How the faces meet inside the contact.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
-pub enum Faces {
-    /// They slide freely.
-    Frictionless,
-    /// They do not slide, but for the last hundredths of the thickness before the contact edge.
-    Stuck,
 }
 
 /// A solver gave up.
@@ -127,7 +110,7 @@ pub fn solve(problem: &Problem) -> Result<Solution, NotConverged> {
         }
         moved = search.narrow(found);
         // One move of a sluggish edge tells nothing yet.
-        if moved <= still && (grid > 1 || unit.faces == Faces::Frictionless) {
+        if moved <= still && (grid > 1 || unit.faces == FaceFriction::Frictionless) {
             return Ok(problem.solution(&Outcome {
                 mesh,
                 contact,

@@ -8,6 +8,7 @@ use serde_json::{Value, json};
 
 use crate::{
     report::{
+        json::{HEAD, Head},
         number::{cut, four, optional, percent, plain, wrapped},
         table::{Side, aligned},
         text::{WIDTH, told_in, wrapped_after},
@@ -179,11 +180,9 @@ fn percent_less(share: f64) -> String {
 /// What `drivers --json` prints of a joint.
 #[derive(Serialize, JsonSchema)]
 pub(super) struct DriversResult {
-    /// Version of the program
-    version: &'static str,
-    /// System of units of every number
-    #[schemars(extend("const" = "SI"))]
-    units: &'static str,
+    /// What made it
+    #[serde(flatten)]
+    head: Head,
     /// The joint file
     #[serde(skip_serializing_if = "Option::is_none")]
     #[schemars(with = "String")]
@@ -299,8 +298,7 @@ pub fn json(ranking: &Ranking) -> Value {
         remedy: input.remedy.clone(),
     });
     json!(DriversResult {
-        version: env!("CARGO_PKG_VERSION"),
-        units: "SI",
+        head: HEAD,
         file: None,
         title: ranking.title.clone(),
         case: ranking.case,

@@ -21,7 +21,7 @@ pub use sweep::torque;
 pub(super) use comparison::CompareResult;
 pub(super) use estimate::EstimateResult;
 pub(super) use pressure::differences;
-pub(super) use shapes::{CautionTold, bound, cautions};
+pub(super) use shapes::{CautionTold, HEAD, Head, bound, cautions};
 pub(super) use sweep::TorqueResult;
 
 /// Number of the file format and of this contract.

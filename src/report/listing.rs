@@ -3,7 +3,7 @@
 use crate::{
     joint::Faults,
     report::{
-        json::FORMAT,
+        json::{HEAD, Head},
         number::plain,
         table::{Side, aligned},
     },
@@ -81,23 +81,22 @@ fn lines(cell: &str) -> String {
 /// The listings as one JSON object, records by kind.
 pub fn json(listings: &[Listing]) -> Value {
     let mut kinds = serde_json::Map::new();
+    let mut object = json!(HEAD);
     for listing in listings {
         let records: Vec<&Value> = listing.items.iter().map(|item| &item.record).collect();
         kinds.insert(listing.kind.to_owned(), json!(records));
     }
-    json!({ "ringsum": env!("CARGO_PKG_VERSION"),
-        "units": "SI", "format": FORMAT, "kinds": kinds })
+    object["kinds"] = kinds.into();
+    object
 }
 
 /// Whether a file was accepted, and its faults: what `check --json` prints of it, and every other command
 /// of a file at fault.
 #[derive(Serialize, JsonSchema)]
 pub(super) struct Checked<'a> {
-    /// Version of the program
-    ringsum: &'static str,
-    /// Number of this contract
-    #[schemars(extend("const" = FORMAT))]
-    format: u32,
+    /// What made it
+    #[serde(flatten)]
+    head: Head,
     /// The file
     file: &'a str,
     /// Whether it has no faults
@@ -128,6 +127,9 @@ struct FaultTold<'a> {
 /// A joint that was read but has no answer.
 #[derive(Serialize, JsonSchema)]
 pub(super) struct Unanswered<'a> {
+    /// What made it
+    #[serde(flatten)]
+    head: Head,
     /// The joint file
     file: &'a str,
     /// There is no answer
@@ -140,6 +142,7 @@ pub(super) struct Unanswered<'a> {
 /// A joint that was read but has no answer, with the reason.
 pub fn unanswered(file: &str, failure: &str) -> Value {
     json!(Unanswered {
+        head: HEAD,
         file,
         ok: false,
         failure,
@@ -172,8 +175,7 @@ pub fn faults(path: &str, found: &Faults) -> Value {
 
 fn checked(file: &str, faults: Vec<FaultTold>) -> Value {
     json!(Checked {
-        ringsum: env!("CARGO_PKG_VERSION"),
-        format: FORMAT,
+        head: HEAD,
         file,
         ok: faults.is_empty(),
         faults,

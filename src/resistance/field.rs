@@ -1,8 +1,11 @@
 //! The pressure field on the faying faces: points for maps, rings for tables, areas and radii.
 
-use crate::resistance::{
-    cells::{Cell, Cells},
-    path::Load,
+use crate::{
+    numerics::roots,
+    resistance::{
+        cells::{Cell, Cells},
+        path::Load,
+    },
 };
 
 /// One ring around one bolt.
@@ -105,16 +108,8 @@ impl Cells {
                 .sum()
         };
         let wanted = share * self.force_carried(forces);
-        let (mut low, mut high) = (0.0, rings.iter().fold(0.0, |far, ring| ring.1.max(far)));
-        for _ in 0..60 {
-            let middle = 0.5 * (low + high);
-            if within(middle) < wanted {
-                low = middle;
-            } else {
-                high = middle;
-            }
-        }
-        0.5 * (low + high)
+        let farthest = rings.iter().fold(0.0, |far: f64, ring| ring.1.max(far));
+        roots::halved(|radius| within(radius) < wanted, 0.0, farthest)
     }
 
     /// The rings around one bolt that lie on the faying faces, from the hole outward.

@@ -4,12 +4,12 @@
 //! with pressures only where faces touch is the set, however it was found.
 
 use proptest::prelude::*;
-use ringsum::pressure::elastic::{Compliance, Faces, Fineness, Head};
+use ringsum::pressure::elastic::{Compliance, FaceFriction, Fineness, HeadModel};
 
 use crate::joints::Plates;
 
 /// A sheet of steel on a plate of aluminium, bolted at one end, hardly tightened.
-fn tail(bow: f64, head: Head, faces: Faces) -> Plates {
+fn tail(bow: f64, head: HeadModel, faces: FaceFriction) -> Plates {
     Plates {
         youngs_modulus: vec![195e9, 69e9],
         hole: 0.00225,
@@ -45,8 +45,8 @@ fn holds(plates: &Plates) {
 #[test]
 fn a_long_thin_tail_finds_its_contact() {
     for bow in [8e-6, -8e-6] {
-        holds(&tail(bow, Head::Uniform, Faces::Frictionless));
-        holds(&tail(bow, Head::Rigid, Faces::Stuck));
+        holds(&tail(bow, HeadModel::Uniform, FaceFriction::Frictionless));
+        holds(&tail(bow, HeadModel::Rigid, FaceFriction::Stuck));
     }
 }
 
@@ -70,8 +70,8 @@ proptest! {
             bearing: 0.0035,
             forces: vec![forces.0, forces.1],
             bow,
-            head: if choices & 1 == 0 { Head::Uniform } else { Head::Rigid },
-            faces: if choices & 2 == 0 { Faces::Frictionless } else { Faces::Stuck },
+            head: if choices & 1 == 0 { HeadModel::Uniform } else { HeadModel::Rigid },
+            faces: if choices & 2 == 0 { FaceFriction::Frictionless } else { FaceFriction::Stuck },
             compliance: if choices & 4 == 0 {
                 Compliance::Hard
             } else {

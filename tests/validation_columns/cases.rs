@@ -3,7 +3,7 @@
 use std::f64::consts::PI;
 
 use ringsum::pressure::{
-    elastic::{Compliance, Faces, Field, Fineness, Head, Through},
+    elastic::{Compliance, FaceFriction, Field, Fineness, HeadModel, Through},
     round,
 };
 use serde_json::Value;
@@ -204,8 +204,8 @@ fn one_bolt_presses_as_in_a_round_pair() {
         thickness: [0.005; 2],
         youngs_modulus: [70e9; 2],
         poisson: [0.33; 2],
-        head: round::Head::Uniform,
-        faces: round::Faces::Frictionless,
+        head: HeadModel::Uniform,
+        faces: FaceFriction::Frictionless,
         tolerance: 0.003,
     })
     .expect("the round pair has a solution");
@@ -227,8 +227,8 @@ fn one_bolt_presses_as_in_a_round_pair() {
 struct Single {
     thickness: [f64; 2],
     fineness: Fineness,
-    head: [Head; 2],
-    faces: [Faces; 2],
+    head: [HeadModel; 2],
+    faces: [FaceFriction; 2],
 }
 
 /// Relative change of the gap near the rim from the first head and faces to the second, as columns
@@ -254,14 +254,8 @@ fn change_of_single(single: &Single) -> [f64; 2] {
             thickness: single.thickness,
             youngs_modulus: [70e9; 2],
             poisson: [0.33; 2],
-            head: match single.head[end] {
-                Head::Uniform => round::Head::Uniform,
-                Head::Rigid => round::Head::Rigid,
-            },
-            faces: match single.faces[end] {
-                Faces::Frictionless => round::Faces::Frictionless,
-                Faces::Stuck => round::Faces::Stuck,
-            },
+            head: single.head[end],
+            faces: single.faces[end],
             tolerance: 0.003,
         })
         .expect("the round pair has a solution")
@@ -282,8 +276,8 @@ fn a_rigid_head_changes_a_single_bolt_as_it_changes_a_round_pair() {
         let [found, wanted] = change_of_single(&Single {
             thickness: [0.005; 2],
             fineness,
-            head: [Head::Uniform, Head::Rigid],
-            faces: [Faces::Frictionless; 2],
+            head: [HeadModel::Uniform, HeadModel::Rigid],
+            faces: [FaceFriction::Frictionless; 2],
         });
         assert!((found / wanted - 1.0).abs() < allowed, "{found} {wanted}");
     }
@@ -296,8 +290,8 @@ fn stuck_faces_change_a_single_bolt_as_they_change_a_round_pair() {
         let [found, wanted] = change_of_single(&Single {
             thickness: [0.004, 0.01],
             fineness,
-            head: [Head::Uniform; 2],
-            faces: [Faces::Frictionless, Faces::Stuck],
+            head: [HeadModel::Uniform; 2],
+            faces: [FaceFriction::Frictionless, FaceFriction::Stuck],
         });
         assert!(wanted < -0.2);
         assert!((found / wanted - 1.0).abs() < 0.1, "{found} {wanted}");
@@ -321,7 +315,7 @@ fn modelling_choices_move_the_gap_as_they_should() {
         );
     };
     let rigid = Plates {
-        head: Head::Rigid,
+        head: HeadModel::Rigid,
         ..plain_ii.clone()
     };
     near(effect(&plain_ii, &rigid), -0.16);
@@ -369,7 +363,7 @@ fn a_thread_lowers_the_gap_the_more_the_shorter_it_is() {
 fn identical_plates_do_not_feel_whether_they_stick() {
     let plain = case_i(Fineness::Fast);
     let stuck = Plates {
-        faces: Faces::Stuck,
+        faces: FaceFriction::Stuck,
         ..plain.clone()
     };
     let change = effect(&plain, &stuck);

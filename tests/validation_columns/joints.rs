@@ -1,8 +1,8 @@
 //! Rectangular bolted plates for tests and benches of the columns solver.
 
 use ringsum::pressure::elastic::{
-    Annulus, Body, Bolt, Compliance, End, Faces, Failure, Field, Fineness, Head, Interface, Layer,
-    Problem, Through, solve,
+    Annulus, Body, Bolt, Compliance, End, FaceFriction, Failure, Field, Fineness, HeadModel,
+    Interface, Layer, Problem, Through, solve,
 };
 
 /// Rectangular plates, upper first, each with its own size and corner.
@@ -19,8 +19,8 @@ pub struct Plates {
     pub at: Vec<[f64; 2]>,
     /// Gap at the middle of the first plate that falls to 0 at its corners; negative the other way.
     pub bow: f64,
-    pub head: Head,
-    pub faces: Faces,
+    pub head: HeadModel,
+    pub faces: FaceFriction,
     pub compliance: Compliance,
     /// Length of a thread in the last plate; none is a nut.
     pub thread: Option<f64>,
@@ -42,8 +42,8 @@ impl Plates {
             forces: vec![5000.0; at.len()],
             at,
             bow: 0.0,
-            head: Head::Uniform,
-            faces: Faces::Frictionless,
+            head: HeadModel::Uniform,
+            faces: FaceFriction::Frictionless,
             compliance: Compliance::Hard,
             thread: None,
             through: None,

@@ -1,8 +1,8 @@
 //! Shapes beyond two equal plates: patches, three bodies, offsets, feet, ribs.
 
 use ringsum::pressure::elastic::{
-    Annulus, Body, Bolt, Compliance, Cover, End, Faces, Field, Fineness, Head, Interface, Layer,
-    Problem, Through, solve,
+    Annulus, Body, Bolt, Compliance, Cover, End, FaceFriction, Field, Fineness, HeadModel,
+    Interface, Layer, Problem, Through, solve,
 };
 
 use crate::joints::{Plates, crossings};
@@ -55,7 +55,7 @@ fn solved(bodies: Vec<Body>) -> Field {
         interfaces: vec![FLAT],
         bolts: bolts.collect(),
         stops: [vec![0.015, 0.025], vec![0.015, 0.025]],
-        head: Head::Uniform,
+        head: HeadModel::Uniform,
         fineness: Fineness::Coarse,
         most_bytes: 1_000_000_000,
         progress: None,
@@ -65,7 +65,7 @@ fn solved(bodies: Vec<Body>) -> Field {
 
 const FLAT: Interface = Interface {
     gap: &|_| 0.0,
-    faces: Faces::Frictionless,
+    faces: FaceFriction::Frictionless,
     compliance: Compliance::Hard,
 };
 
@@ -100,7 +100,7 @@ fn uniform_pressure_goes_straight_through_unlike_plates() {
             vec![0.006, 0.015, 0.025, 0.032],
             vec![0.005, 0.015, 0.025, 0.031],
         ],
-        head: Head::Uniform,
+        head: HeadModel::Uniform,
         fineness: Fineness::Fine,
         most_bytes: 1_000_000_000,
         progress: None,

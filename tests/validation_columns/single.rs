@@ -1,8 +1,8 @@
 //! One bolt in a disc against quadratic ring elements: nuts, threads, rigid heads, stuck faces.
 
 use ringsum::pressure::elastic::{
-    Annulus, Body, Bolt, Compliance, End, Faces, Field, Fineness, Head, Interface, Layer, Problem,
-    solve,
+    Annulus, Body, Bolt, Compliance, End, FaceFriction, Field, Fineness, HeadModel, Interface,
+    Layer, Problem, solve,
 };
 use serde::Deserialize;
 
@@ -77,16 +77,16 @@ fn field(case: &Case, fineness: Fineness, others: &[[f64; 2]]) -> Field {
         interfaces: vec![Interface {
             gap: &|_| 0.0,
             faces: match case.faces.as_str() {
-                "stuck" => Faces::Stuck,
-                _ => Faces::Frictionless,
+                "stuck" => FaceFriction::Stuck,
+                _ => FaceFriction::Frictionless,
             },
             compliance: Compliance::Hard,
         }],
         bolts,
         stops: [Vec::new(), Vec::new()],
         head: match case.head.as_str() {
-            "rigid" => Head::Rigid,
-            _ => Head::Uniform,
+            "rigid" => HeadModel::Rigid,
+            _ => HeadModel::Uniform,
         },
         fineness,
         most_bytes: 2_000_000_000,

@@ -8,8 +8,8 @@ use std::{collections::BTreeMap, f64::consts::PI, sync::Arc};
 use ringsum::{
     numerics::columns::{Disc, Fine, Plan, Stop, lines},
     pressure::elastic::{
-        Annulus, Body, Bolt, Compliance, End, Faces, Field, Fineness, Head, Interface, Layer,
-        Problem, solve,
+        Annulus, Body, Bolt, Compliance, End, FaceFriction, Field, Fineness, HeadModel, Interface,
+        Layer, Problem, solve,
     },
     resistance::columns::{
         Conductivity, Edge, Rim, Sink, Source, Stack, Terminals, Zone, solve_both,
@@ -375,12 +375,12 @@ impl Case {
             bodies: [model.t1, model.t2].map(body).to_vec(),
             interfaces: vec![Interface {
                 gap: &gap,
-                faces: Faces::Frictionless,
+                faces: FaceFriction::Frictionless,
                 compliance: Compliance::Hard,
             }],
             bolts: bolts.collect(),
             stops: [Vec::new(), Vec::new()],
-            head: Head::Uniform,
+            head: HeadModel::Uniform,
             fineness,
             most_bytes: 2_000_000_000,
             progress: None,

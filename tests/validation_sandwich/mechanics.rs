@@ -6,8 +6,8 @@ use ringsum::{
         multigrid::{Coarsening, Effort, Multigrid, conjugate_gradients},
     },
     pressure::elastic::{
-        Annulus, Body, Bolt, Compliance, Cover, End, Faces, Field, Fineness, Head, Height, Inlay,
-        Interface, Layer, Problem, Through, solve,
+        Annulus, Body, Bolt, Compliance, Cover, End, FaceFriction, Field, Fineness, HeadModel,
+        Height, Inlay, Interface, Layer, Problem, Through, solve,
     },
 };
 
@@ -166,7 +166,7 @@ fn solved(panel: Vec<Layer>, (force, gap): (f64, &Height)) -> Field {
         bodies,
         interfaces: vec![Interface {
             gap,
-            faces: Faces::Frictionless,
+            faces: FaceFriction::Frictionless,
             compliance: Compliance::Hard,
         }],
         bolts: vec![Bolt {
@@ -180,7 +180,7 @@ fn solved(panel: Vec<Layer>, (force, gap): (f64, &Height)) -> Field {
             },
         }],
         stops: [Vec::new(), Vec::new()],
-        head: Head::Uniform,
+        head: HeadModel::Uniform,
         fineness: Fineness::Coarse,
         most_bytes: 1_000_000_000,
         progress: None,

@@ -8,7 +8,7 @@ use crate::{
         unknown::{Failure, Load, Question, Unknown, question, words},
     },
     joint::{Joint, Plane, Tightening},
-    numerics::sampling::Sobol,
+    numerics::{roots, sampling::Sobol},
     uncertainty::{Input, NUMERICAL, inputs},
 };
 
@@ -58,17 +58,12 @@ pub(super) fn extent(input: &Input) -> [f64; 2] {
 
 /// Puts an input where it reads a value.
 fn put(input: &Input, at: &mut Realisation, value: f64) {
-    let (mut low, mut high) = (0.0, 1.0);
-    // Sixty halvings reach the last digit of a quantile.
-    for _ in 0..60 {
-        let middle = f64::midpoint(low, high);
-        (input.place)(at, middle);
-        if (input.reading)(at) < value {
-            low = middle;
-        } else {
-            high = middle;
-        }
-    }
+    let below = |quantile: f64| {
+        (input.place)(at, quantile);
+        (input.reading)(at) < value
+    };
+    let quantile = roots::halved(below, 0.0, 1.0);
+    (input.place)(at, quantile);
 }
 
 impl Bench<'_> {

@@ -7,7 +7,7 @@ use crate::{
     numerics::multigrid::{Coarsening, Effort, Factor, Multigrid, Stalled, conjugate_gradients},
     numerics::{banded::NotPositiveDefinite, columns::Solid},
     pressure::elastic::{
-        Body, Failure, Field, Head, Health, Mesh, Problem, Stage,
+        Body, Failure, Field, HeadModel, Health, Mesh, Problem, Stage,
         field::{State, contradiction},
         system::{Pairing, System, stuck},
     },
@@ -78,7 +78,7 @@ pub(super) fn solve(
         Some(state) if state.displacement.len() == system.load.len() => state.displacement.clone(),
         _ => system.operator.zeros(),
     };
-    let heads_rock = problem.head == Head::Rigid && previous.is_none();
+    let heads_rock = problem.head == HeadModel::Rigid && previous.is_none();
     let hardness = Course::new(problem.fineness, heads_rock).hardness;
     let changes: Vec<Vec<u8>> = active.iter().map(|set| vec![0; set.len()]).collect();
     for (index, active) in active.iter().enumerate() {

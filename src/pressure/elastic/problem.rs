@@ -1,5 +1,7 @@
 //! What is solved: bodies of layers, bolts that clamp them, how they meet.
 
+use crate::joint::{FaceFriction, HeadModel};
+
 /// Where a layer is, in joint coordinates.
 pub type Cover<'a> = dyn Fn([f64; 2]) -> bool + Sync + 'a;
 
@@ -18,7 +20,7 @@ pub struct Problem<'a> {
     /// Places across x and across y where a grid line is wanted besides the ends of the bodies, m.
     pub stops: [Vec<f64>; 2],
     /// How heads and nuts press.
-    pub head: Head,
+    pub head: HeadModel,
     /// How fine the grid is.
     pub fineness: Fineness,
     /// Memory that the solution may take, bytes.
@@ -81,7 +83,7 @@ pub struct Interface<'a> {
     /// Distance of the faying faces before any force, m; of any sign, a constant does not matter.
     pub gap: &'a Height<'a>,
     /// Whether they slide.
-    pub faces: Faces,
+    pub faces: FaceFriction,
     /// What yields between them.
     pub compliance: Compliance,
 }
@@ -123,24 +125,6 @@ pub enum End {
         /// Engaged length, m; at most the thickness.
         length: f64,
     },
-}
-
-/// How a head or a nut presses.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
-pub enum Head {
-    /// One pressure everywhere.
-    Uniform,
-    /// One displacement where it touches, without friction; it may lift off but not tilt.
-    Rigid,
-}
-
-/// Whether faces slide.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
-pub enum Faces {
-    /// Freely.
-    Frictionless,
-    /// Not at all where they touch.
-    Stuck,
 }
 
 /// What yields between two faces, as pressure over closure.

@@ -3,7 +3,7 @@
 use crate::{
     numerics::columns::{Fine, Plan, Stop, lines},
     pressure::elastic::{
-        Bolt, End, Faces, Failure, Fineness, Head, Layer, Problem, Through, symmetry,
+        Bolt, End, FaceFriction, Failure, Fineness, HeadModel, Layer, Problem, Through, symmetry,
     },
 };
 
@@ -181,8 +181,8 @@ pub(super) fn loose(problem: &Problem) -> usize {
         .iter()
         .any(|bolt| matches!(bolt.end, End::Nut(_)));
     match problem.head {
-        Head::Uniform => 0,
-        Head::Rigid => 1 + usize::from(nuts),
+        HeadModel::Uniform => 0,
+        HeadModel::Rigid => 1 + usize::from(nuts),
     }
 }
 
@@ -211,7 +211,7 @@ pub(super) fn size(problem: &Problem, plan: &Plan) -> Size {
     let stuck = problem
         .interfaces
         .iter()
-        .filter(|one| one.faces == Faces::Stuck)
+        .filter(|one| one.faces == FaceFriction::Stuck)
         .count();
     let ties = problem.interfaces.len() + 2 * stuck + 2 * loose(problem);
     let stencils = (layers as f64 * 12.0 + ties as f64) / 12.0 * STENCILS;

@@ -261,8 +261,8 @@ fn spread(part: &[f64], mirror: &Mirror, (stride, bodies): (usize, &[[usize; 2]]
 mod tests {
     use super::*;
     use crate::pressure::elastic::{
-        Annulus, Body, Compliance, Faces, Fineness, Head, Interface, Layer, resolution, solve,
-        solve_from,
+        Annulus, Body, Compliance, FaceFriction, Fineness, HeadModel, Interface, Layer, resolution,
+        solve, solve_from,
     };
 
     /// Three by two bolts on plates of 60 by 40 mm, nuts below or threads.
@@ -288,7 +288,7 @@ mod tests {
     /// Solves two plates with holes between the bolts; the field with and without mirrors.
     fn both(
         bolts: &[Bolt],
-        (head, faces): (Head, Faces),
+        (head, faces): (HeadModel, FaceFriction),
         gap: &(dyn Fn([f64; 2]) -> f64 + Sync),
         from: Option<&Field>,
     ) -> (Option<Mirror>, Field, Field) {
@@ -389,9 +389,9 @@ mod tests {
             length: 3e-3,
         };
         for (end, head, faces) in [
-            (nut, Head::Uniform, Faces::Frictionless),
-            (thread, Head::Rigid, Faces::Frictionless),
-            (nut, Head::Rigid, Faces::Stuck),
+            (nut, HeadModel::Uniform, FaceFriction::Frictionless),
+            (thread, HeadModel::Rigid, FaceFriction::Frictionless),
+            (nut, HeadModel::Rigid, FaceFriction::Stuck),
         ] {
             let (mirror, part, whole) = both(&bolts(end), (head, faces), &|_| 0.0, None);
             assert_eq!(mirror.map(|mirror| mirror.across()), Some([true, true]));
@@ -407,7 +407,7 @@ mod tests {
             inner: 2.2e-3,
             outer: 4.0e-3,
         });
-        let plain = (Head::Uniform, Faces::Frictionless);
+        let plain = (HeadModel::Uniform, FaceFriction::Frictionless);
         // A wedge along y, a few micrometres as faces have them.
         let (mirror, part, whole) = both(&bolts(nut), plain, &|[_, y]| 1e-4 * y, None);
         assert_eq!(mirror.map(|mirror| mirror.across()), Some([true, false]));

@@ -7,8 +7,8 @@ use crate::{
         Disc, Layer, Mirror, Operator, Plan, Region, Solid, Tie, gradient, lumped, span_loads,
     },
     pressure::elastic::{
-        Annulus, Bolt, Compliance, End, Faces, Failure, Head, Layer as Material, Mesh, Problem,
-        Stage, resolution,
+        Annulus, Bolt, Compliance, End, FaceFriction, Failure, HeadModel, Layer as Material, Mesh,
+        Problem, Stage, resolution,
     },
 };
 
@@ -155,8 +155,8 @@ impl System {
         };
         let normal = tie(2);
         let shear = match meeting.faces {
-            Faces::Frictionless => None,
-            Faces::Stuck => Some([tie(0), tie(1)]),
+            FaceFriction::Frictionless => None,
+            FaceFriction::Stuck => Some([tie(0), tie(1)]),
         };
         self.pairings.push(Pairing {
             plus: operator.unknown(upper, 2, 0),
@@ -195,11 +195,11 @@ impl System {
         let head_node = self.operator.unknown(0, 2, top.last_node());
         let nut_node = self.operator.unknown(last, 2, foot.first_node);
         match problem.head {
-            Head::Uniform => {
+            HeadModel::Uniform => {
                 self.add_load(&heads, head_node);
                 self.add_load(&nuts, nut_node);
             }
-            Head::Rigid => {
+            HeadModel::Rigid => {
                 let loose = last + 1;
                 let outside =
                     [&problem.bodies[0], &problem.bodies[last]].map(|body| &body.layers[body.main]);

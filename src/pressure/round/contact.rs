@@ -9,7 +9,7 @@ use crate::{
         elements::edge_load,
     },
     pressure::round::{
-        Faces, Head, NotConverged, Problem,
+        FaceFriction, HeadModel, NotConverged, Problem,
         mesh::Mesh,
         plate::{Load, Loaded, Plate},
     },
@@ -66,16 +66,16 @@ pub(super) fn contact(problem: &Problem, mesh: &Mesh) -> Result<Contact, NotConv
         head: problem.head,
         bearing: mesh.bearing,
         sheared: match problem.faces {
-            Faces::Frictionless => 0,
-            Faces::Stuck => sheared_lines(problem, mesh),
+            FaceFriction::Frictionless => 0,
+            FaceFriction::Stuck => sheared_lines(problem, mesh),
         },
     };
     let numbering = Numbering {
         lines,
         sheared: loaded.sheared,
         headed: match problem.head {
-            Head::Uniform => 0,
-            Head::Rigid => mesh.bearing + 1,
+            HeadModel::Uniform => 0,
+            HeadModel::Rigid => mesh.bearing + 1,
         },
     };
     let plates = [0, 1].map(|plate| Plate {

@@ -2,7 +2,7 @@
 
 use crate::{
     numerics::grading::{Mark, graded},
-    pressure::round::{Faces, Head, Problem},
+    pressure::round::{FaceFriction, HeadModel, Problem},
 };
 
 /// Lines common to both plates, and lines through each of them.
@@ -53,12 +53,12 @@ impl Mesh {
             spacing: spacing * size,
         };
         let (at_hole, at_edge) = match problem.faces {
-            Faces::Frictionless => (AT_HOLE, AT_EDGE),
-            Faces::Stuck => (AT_STUCK_HOLE, AT_STUCK_EDGE),
+            FaceFriction::Frictionless => (AT_HOLE, AT_EDGE),
+            FaceFriction::Stuck => (AT_STUCK_HOLE, AT_STUCK_EDGE),
         };
         let (at_head, outside) = match problem.head {
-            Head::Uniform => (AT_HEAD, AT_OUTSIDE),
-            Head::Rigid => (AT_RIGID_HEAD, UNDER_RIGID_HEAD),
+            HeadModel::Uniform => (AT_HEAD, AT_OUTSIDE),
+            HeadModel::Rigid => (AT_RIGID_HEAD, UNDER_RIGID_HEAD),
         };
         let mut marks = vec![mark(a, at_hole), mark(1.0, at_head)];
         let inside = edge < rim;

@@ -8,7 +8,7 @@ use crate::{
         condensation::{Chain, Front},
         elements::{Lame, NODES, Ring, edge_load},
     },
-    pressure::round::Head,
+    pressure::round::HeadModel,
 };
 
 /// A load of unit amplitude on a plate, and with it the mean displacement that it feels.
@@ -41,7 +41,7 @@ pub(super) struct Plate<'a> {
 #[derive(Clone, Copy, Debug)]
 pub(super) struct Loaded {
     /// How the head presses.
-    pub head: Head,
+    pub head: HeadModel,
     /// Index of the grid line where the head ends.
     pub bearing: usize,
     /// Number of grid lines, from the hole on, that can carry shear.
@@ -58,8 +58,8 @@ impl Loaded {
                 loads.push(Load::Shear(line));
             }
             match self.head {
-                Head::Rigid if line <= self.bearing => loads.push(Load::Head(line)),
-                Head::Uniform if line == self.bearing => loads.push(Load::Uniform),
+                HeadModel::Rigid if line <= self.bearing => loads.push(Load::Head(line)),
+                HeadModel::Uniform if line == self.bearing => loads.push(Load::Uniform),
                 _ => {}
             }
         }

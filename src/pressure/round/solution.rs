@@ -2,6 +2,8 @@
 
 use std::f64::consts::PI;
 
+use crate::numerics::roots;
+
 /// Pressure and gap between two annular plates, per unit of clamp force.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Solution {
@@ -68,17 +70,8 @@ impl Solution {
 
     /// Radius inside which a share of the force is carried, m.
     pub fn radius_holding(&self, share: f64) -> f64 {
-        let (mut low, mut high) = (self.radii[0], self.contact_radius);
-        // Sixty halvings reach the spacing of f64.
-        for _ in 0..60 {
-            let middle = 0.5 * (low + high);
-            if self.carried_within(middle) < share {
-                low = middle;
-            } else {
-                high = middle;
-            }
-        }
-        0.5 * (low + high)
+        let inside = |radius: f64| self.carried_within(radius) < share;
+        roots::halved(inside, self.radii[0], self.contact_radius)
     }
 
     fn between(&self, values: &[f64], radius: f64) -> f64 {

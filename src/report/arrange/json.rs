@@ -6,17 +6,18 @@ use serde_json::{Value, json};
 
 use crate::{
     layout::{Answer, Defaults, InCase, Row, Verdict},
-    report::{arrange::verdict, json::bound},
+    report::{
+        arrange::verdict,
+        json::{HEAD, Head, bound},
+    },
 };
 
 /// What `arrange --json` prints of a joint.
 #[derive(Serialize, JsonSchema)]
 pub struct ArrangeResult {
-    /// Version of the program
-    ringsum: &'static str,
-    /// System of units of every number
-    #[schemars(extend("const" = "SI"))]
-    units: &'static str,
+    /// What made it
+    #[serde(flatten)]
+    head: Head,
     /// The joint file
     #[serde(skip_serializing_if = "Option::is_none")]
     #[schemars(with = "String")]
@@ -136,8 +137,7 @@ pub fn json(answer: &Answer, defaults: &Defaults) -> Value {
         value: value.clone(),
     });
     json!(ArrangeResult {
-        ringsum: env!("CARGO_PKG_VERSION"),
-        units: "SI",
+        head: HEAD,
         file: None,
         title: answer.title.clone(),
         cases: answer.cases.clone(),

@@ -12,21 +12,16 @@ use crate::{
     },
     report::{
         fit::measured,
-        json::{CautionTold, FORMAT, cautions},
+        json::{CautionTold, HEAD, Head, cautions},
     },
 };
 
 /// What `fit --json` prints of a law or a table.
 #[derive(Serialize, JsonSchema)]
 pub struct SeriesResult {
-    /// Version of the program
-    ringsum: &'static str,
-    /// System of units of every number
-    #[schemars(extend("const" = "SI"))]
-    units: &'static str,
-    /// Number of this contract
-    #[schemars(extend("const" = FORMAT))]
-    format: u32,
+    /// What made it
+    #[serde(flatten)]
+    head: Head,
     /// The table of readings
     file: String,
     /// What was fitted
@@ -129,14 +124,9 @@ struct HysteresisTold {
 /// What `fit --unknown --json` prints.
 #[derive(Serialize, JsonSchema)]
 pub struct UnknownResult {
-    /// Version of the program
-    ringsum: &'static str,
-    /// System of units of every number
-    #[schemars(extend("const" = "SI"))]
-    units: &'static str,
-    /// Number of this contract
-    #[schemars(extend("const" = FORMAT))]
-    format: u32,
+    /// What made it
+    #[serde(flatten)]
+    head: Head,
     /// The table of readings
     file: String,
     /// What was fitted
@@ -209,9 +199,7 @@ struct DeviationTold {
 /// A fitted series in SI.
 pub fn series_json(series: &Series, (name, block): (&str, &str)) -> Value {
     json!(SeriesResult {
-        ringsum: env!("CARGO_PKG_VERSION"),
-        units: "SI",
-        format: FORMAT,
+        head: HEAD,
         file: name.to_owned(),
         fit: "law",
         abscissa: series.abscissa.name(),
@@ -275,9 +263,7 @@ pub fn answer_json(asked: &Question, answer: &Answer, name: &str) -> Value {
     let profile = &answer.profile;
     let curve = profile.curve.iter().step_by(20);
     json!(UnknownResult {
-        ringsum: env!("CARGO_PKG_VERSION"),
-        units: "SI",
-        format: FORMAT,
+        head: HEAD,
         file: name.to_owned(),
         fit: "unknown",
         title: answer.title.clone(),

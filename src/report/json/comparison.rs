@@ -8,7 +8,7 @@ use crate::{
     joint::Mass,
     report::{
         comparison::{lost, strength},
-        json::{EstimateResult, FORMAT, estimate},
+        json::{EstimateResult, HEAD, Head, estimate},
     },
     uncertainty::{Compared, Comparison, Sense, Verdict},
 };
@@ -16,14 +16,9 @@ use crate::{
 /// What `compare --json` prints.
 #[derive(Serialize, JsonSchema)]
 pub struct CompareResult {
-    /// Version of the program
-    ringsum: &'static str,
-    /// System of units of every number
-    #[schemars(extend("const" = "SI"))]
-    units: &'static str,
-    /// Number of this contract
-    #[schemars(extend("const" = FORMAT))]
-    format: u32,
+    /// What made it
+    #[serde(flatten)]
+    head: Head,
     /// Name of the best joint at nominal; null where there is none
     best: Option<String>,
     /// What best means
@@ -99,9 +94,7 @@ struct LossTold {
 pub fn comparison(found: &Comparison) -> Value {
     let best = found.joints.get(found.best);
     json!(CompareResult {
-        ringsum: env!("CARGO_PKG_VERSION"),
-        units: "SI",
-        format: FORMAT,
+        head: HEAD,
         best: best.map(|joint| joint.name.clone()),
         sense: match found.sense {
             Sense::Pass => "least source to sink",

@@ -12,12 +12,11 @@ use crate::{
     joint::RequirementKind,
     report::{
         json::{
-            FORMAT,
             beside::{MediumTold, RingTold, VerificationTold},
             pressure::{self, PressureTold},
             shapes::{
-                AssumptionTold, CautionTold, ConductanceEnds, Ends, LowHigh, StrengthUse,
-                assumptions, bound, cautions, plane_key,
+                AssumptionTold, CautionTold, ConductanceEnds, Ends, HEAD, Head, LowHigh,
+                StrengthUse, assumptions, bound, cautions, plane_key,
             },
             temperatures::{self, TemperaturesTold},
             window::{self, AxialTold},
@@ -30,14 +29,9 @@ use crate::{
 /// What `estimate --json` prints of a joint. Its first case stands at the top level.
 #[derive(Serialize, JsonSchema)]
 pub struct EstimateResult {
-    /// Version of the program
-    ringsum: &'static str,
-    /// System of units of every number
-    #[schemars(extend("const" = "SI"))]
-    units: &'static str,
-    /// Number of this contract
-    #[schemars(extend("const" = FORMAT))]
-    format: u32,
+    /// What made it
+    #[serde(flatten)]
+    head: Head,
     /// The joint file; missing inside a comparison
     #[serde(skip_serializing_if = "Option::is_none")]
     #[schemars(with = "String")]
@@ -384,9 +378,7 @@ pub(super) fn told(estimate: &estimate::Estimate) -> EstimateResult {
     };
     let worst = estimate.requirement();
     EstimateResult {
-        ringsum: env!("CARGO_PKG_VERSION"),
-        units: "SI",
-        format: FORMAT,
+        head: HEAD,
         file: None,
         variant: None,
         title: estimate.title.clone(),

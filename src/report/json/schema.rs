@@ -5,6 +5,7 @@ use serde_json::{Value, json};
 
 use crate::report::{
     arrange::ArrangeResult,
+    codes::{CodeTold, CodesTold},
     drivers::DriversResult,
     fit::{SeriesResult, UnknownResult},
     json::{CompareResult, EstimateResult, TorqueResult},
@@ -12,8 +13,8 @@ use crate::report::{
 };
 
 /// Commands whose JSON has a schema.
-pub const COMMANDS: [&str; 7] = [
-    "estimate", "torque", "compare", "drivers", "arrange", "fit", "check",
+pub const COMMANDS: [&str; 8] = [
+    "estimate", "torque", "compare", "drivers", "arrange", "fit", "check", "explain",
 ];
 
 /// The schema of what a command prints with `--json`; without a command that of all.
@@ -53,6 +54,9 @@ pub fn schema(command: Option<&str>) -> Value {
 
 /// References to the forms of what a command prints.
 fn printed(command: &str, generator: &mut SchemaGenerator) -> Vec<Value> {
+    if command == "explain" {
+        return vec![of::<CodeTold>(generator), of::<CodesTold>(generator)];
+    }
     let mut forms = match command {
         "estimate" => vec![of::<EstimateResult>(generator)],
         "torque" => vec![of::<TorqueResult>(generator)],

@@ -7,6 +7,27 @@ use crate::{
     diagnostic::{Assumption, Caution},
     estimate::Band,
     joint::{Limit, Plane},
+    report::json::FORMAT,
+};
+
+/// What every answer begins with.
+#[derive(Serialize, JsonSchema)]
+pub struct Head {
+    /// Version of the program
+    ringsum: &'static str,
+    /// System of units of every number
+    #[schemars(extend("const" = "SI"))]
+    units: &'static str,
+    /// Number of this contract
+    #[schemars(extend("const" = FORMAT))]
+    format: u32,
+}
+
+/// That of this version.
+pub const HEAD: Head = Head {
+    ringsum: env!("CARGO_PKG_VERSION"),
+    units: "SI",
+    format: FORMAT,
 };
 
 /// Low, nominal and high of one number.

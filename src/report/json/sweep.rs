@@ -7,8 +7,7 @@ use serde_json::{Value, json};
 use crate::{
     estimate::{Minimum, TorquePoint, TorqueSweep},
     report::json::{
-        FORMAT,
-        shapes::{CautionTold, Ends, ResistanceEnds, StrengthUse, bound, cautions},
+        shapes::{CautionTold, Ends, HEAD, Head, ResistanceEnds, StrengthUse, bound, cautions},
         window::{self, LimitTold, WindowTold},
     },
 };
@@ -16,14 +15,9 @@ use crate::{
 /// What `torque --json` prints of a joint.
 #[derive(Serialize, JsonSchema)]
 pub struct TorqueResult {
-    /// Version of the program
-    ringsum: &'static str,
-    /// System of units of every number
-    #[schemars(extend("const" = "SI"))]
-    units: &'static str,
-    /// Number of this contract
-    #[schemars(extend("const" = FORMAT))]
-    format: u32,
+    /// What made it
+    #[serde(flatten)]
+    head: Head,
     /// The joint file
     #[serde(skip_serializing_if = "Option::is_none")]
     #[schemars(with = "String")]
@@ -145,9 +139,7 @@ fn told(sweep: &TorqueSweep) -> TorqueResult {
         .both
         .map(|both| both.low.torque <= sweep.stated && sweep.stated <= both.high.torque);
     TorqueResult {
-        ringsum: env!("CARGO_PKG_VERSION"),
-        units: "SI",
-        format: FORMAT,
+        head: HEAD,
         file: None,
         title: sweep.title.clone(),
         group: sweep.group.clone(),

@@ -4,7 +4,7 @@ use std::collections::BTreeMap;
 
 use crate::{
     numerics::columns::{Plan, Scalar, node_heights, span_loads},
-    pressure::elastic::Mesh,
+    pressure::elastic::{Mesh, MeshBody},
     resistance::{Failure, columns::Part},
 };
 
@@ -126,6 +126,20 @@ impl Slab {
 
     fn thickness(&self) -> f64 {
         self.heights.iter().sum()
+    }
+}
+
+/// A body of the contact's mesh, whose layers lie the other way about.
+impl From<&MeshBody> for Body {
+    fn from(body: &MeshBody) -> Self {
+        let layers = body.layers.iter().rev().map(|layer| Slab {
+            shares: layer.shares.clone(),
+            heights: layer.heights.clone(),
+            degree: layer.degree,
+        });
+        Self {
+            layers: layers.collect(),
+        }
     }
 }
 
@@ -262,22 +276,7 @@ impl Stack {
     /// An interface has one part, or two where there are feet: the second joins the plates beside
     /// them, across the gap that the field calls open.
     pub fn of(mesh: &Mesh) -> Result<Self, Failure> {
-        let bodies = mesh
-            .bodies
-            .iter()
-            .map(|body| Body {
-                layers: body
-                    .layers
-                    .iter()
-                    .rev()
-                    .map(|layer| Slab {
-                        shares: layer.shares.clone(),
-                        heights: layer.heights.clone(),
-                        degree: layer.degree,
-                    })
-                    .collect(),
-            })
-            .collect();
+        let bodies = mesh.bodies.iter().map(Body::from).collect();
         let mut stack = Self::new(mesh.plan.clone(), bodies)?;
         for interface in 0..mesh.faces.len() {
             stack = stack.meeting(interface, Meeting::of(mesh, interface))?;

@@ -1,6 +1,9 @@
 //! How far to go along a step so that the energy falls.
 
-use crate::pressure::elastic::{Faces, newton::Search};
+use crate::{
+    numerics::roots,
+    pressure::elastic::{FaceFriction, newton::Search},
+};
 
 /// Rise of the energy, relative to its size, that counts as rounding or an unfinished solution.
 const LEVEL: f64 = 1e-9;
@@ -41,7 +44,7 @@ impl Search<'_> {
     /// Keeps a step that lowers the energy; shortens any other to where the energy is least along it.
     pub(super) fn descend(&mut self, before: &[f64]) {
         let sticks = self.problem.interfaces.iter();
-        if sticks.clone().any(|one| one.faces == Faces::Stuck) {
+        if sticks.clone().any(|one| one.faces == FaceFriction::Stuck) {
             // Ties that come and go with the contact leave no energy to compare.
             return;
         }
@@ -98,14 +101,5 @@ fn contact_slope(gaps: &[[f64; 3]], part: f64) -> f64 {
 
 /// Where a rising slope passes zero between 0 and 1.
 fn least(slope: impl Fn(f64) -> f64) -> f64 {
-    let (mut low, mut high) = (0.0, 1.0);
-    for _ in 0..50 {
-        let middle = 0.5 * (low + high);
-        if slope(middle) < 0.0 {
-            low = middle;
-        } else {
-            high = middle;
-        }
-    }
-    0.5 * (low + high)
+    roots::halved(|part| slope(part) < 0.0, 0.0, 1.0)
 }

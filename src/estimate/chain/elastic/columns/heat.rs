@@ -15,7 +15,7 @@ use crate::{
     resistance::{
         self, Path,
         columns::{
-            Body, Conduction, Conductivity, Heat, Meeting, Perfect, Placed, Slab, Stack, Terminals,
+            Body, Conduction, Conductivity, Heat, Meeting, Perfect, Placed, Stack, Terminals,
             nodal,
         },
     },
@@ -46,7 +46,7 @@ impl Plates {
         order: Order,
         mesh: &Mesh,
     ) -> Result<Self, resistance::Failure> {
-        let mut bodies: Vec<Body> = mesh.bodies.iter().map(body).collect();
+        let mut bodies: Vec<Body> = mesh.bodies.iter().map(Body::from).collect();
         let mut faces: Vec<Vec<Meeting>> = (0..mesh.faces.len())
             .map(|interface| Meeting::of(mesh, interface))
             .collect();
@@ -258,20 +258,4 @@ pub(super) fn bridged(conductances: &Conductances) -> Conductances {
         }
     }
     found
-}
-
-/// A body of the contact's mesh with its layers from below.
-fn body(body: &crate::pressure::elastic::MeshBody) -> Body {
-    Body {
-        layers: body
-            .layers
-            .iter()
-            .rev()
-            .map(|layer| Slab {
-                shares: layer.shares.clone(),
-                heights: layer.heights.clone(),
-                degree: layer.degree,
-            })
-            .collect(),
-    }
 }

@@ -11,10 +11,9 @@ use crate::{
             variant::Variant,
         },
     },
-    joint::{self, Engagement, FaceFriction, Fastener, HeadModel, Joint, Zone},
+    joint::{self, Engagement, Fastener, Joint, Zone},
     pressure::elastic::{
-        self, Annulus, Bolt, End, Faces, Fineness, Head, Height, Interface, Problem, Progress,
-        Stage,
+        self, Annulus, Bolt, End, Fineness, Height, Interface, Problem, Progress, Stage,
     },
 };
 
@@ -107,10 +106,7 @@ pub(super) fn with_problem<T>(
         .enumerate()
         .map(|(index, gap)| Interface {
             gap: gap.as_ref(),
-            faces: match task.variant.faces(joint) {
-                FaceFriction::Frictionless => Faces::Frictionless,
-                FaceFriction::Stuck => Faces::Stuck,
-            },
+            faces: task.variant.faces(joint),
             compliance: compliance((joint, order.plate(index, count)), task),
         })
         .collect();
@@ -120,10 +116,7 @@ pub(super) fn with_problem<T>(
         interfaces,
         bolts: bolts(joint, order, task.forces),
         stops: [0, 1].map(|axis| stops(joint, axis)),
-        head: match task.variant.head(joint) {
-            HeadModel::Uniform => Head::Uniform,
-            HeadModel::Rigid => Head::Rigid,
-        },
+        head: task.variant.head(joint),
         fineness: task.fineness,
         most_bytes: task.most_bytes,
         progress: Some(&tell),

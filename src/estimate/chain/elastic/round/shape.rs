@@ -2,10 +2,8 @@
 
 use crate::{
     estimate::chain::elastic::{level::Level, variant::Variant},
-    joint::{
-        Compliance, Engagement, FaceFriction, Filler, HeadModel, Joint, Outline, Plate, Sink, Zone,
-    },
-    pressure::round::{self, Faces, Head},
+    joint::{Compliance, Engagement, Filler, Joint, Outline, Plate, Sink, Zone},
+    pressure::round,
     resistance::round::{Disc, Inlet, Outlet, Patch, Problem},
 };
 
@@ -111,14 +109,8 @@ impl Shape {
             thickness: self.thickness,
             youngs_modulus: plates.map(|plate| plate.material.youngs_modulus.value),
             poisson: plates.map(|plate| plate.material.poisson.value),
-            head: match variant.head(joint) {
-                HeadModel::Uniform => Head::Uniform,
-                HeadModel::Rigid => Head::Rigid,
-            },
-            faces: match variant.faces(joint) {
-                FaceFriction::Frictionless => Faces::Frictionless,
-                FaceFriction::Stuck => Faces::Stuck,
-            },
+            head: variant.head(joint),
+            faces: variant.faces(joint),
             tolerance: tolerance(level),
         }
     }
