@@ -152,7 +152,7 @@ impl Known<'_> {
 
     fn contraction_between(&self, from: f64, to: f64) -> Result<f64, ColdFault> {
         let serves = |t: f64| (EXPANSION_SERVES[0]..=EXPANSION_SERVES[1]).contains(&t);
-        if serves(from) && serves(to) {
+        if self.contraction.is_none() && serves(from) && serves(to) {
             return Ok(self.expansion * (to - from));
         }
         Ok(self.length_at(to)? - self.length_at(from)?)

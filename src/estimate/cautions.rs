@@ -42,6 +42,7 @@ pub fn gathered(chain: &Chain, cases: &[CaseResult]) -> Result<Vec<Caution>, Fai
     found.extend(field::field_cautions(chain, cases));
     found.extend(faces::conductance_cautions(joint, &state, cases));
     found.extend(faces::material_cautions(joint, cases));
+    found.extend(faces::gas_out_of_table(joint, cases));
     found.extend(resistance_cautions(chain, &state, cases)?);
     found.extend(service_cautions(chain, cases)?);
     let mut told: Vec<Caution> = Vec::new();

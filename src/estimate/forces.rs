@@ -213,16 +213,25 @@ impl Group {
         }
     }
 
-    /// The limits of the bolt in service at its worst case: stress with half the torsion, proof load.
+    /// The limits of the bolt in service at its worst case: stress with half the torsion, proof load, and
+    /// what seats, threads and inserts bear where that is more than at assembly.
     pub fn in_service(&self, joint: &Joint, fastener: &Fastener) -> Vec<LimitUse> {
+        let force = self.most_in_service(joint, fastener);
+        let more = force > preload::force_band(fastener).high;
+        let mut limits = preload::limits_in_service(fastener, &self.supports, force);
+        limits.retain(|limit| more || preload::limits::at_assembly(limit.name).is_none());
+        limits
+    }
+
+    /// Largest force of the bolt in service, N, a load from outside in it.
+    pub fn most_in_service(&self, joint: &Joint, fastener: &Fastener) -> f64 {
         let forces = (0..joint.service.cases.len()).map(|case| {
             self.shared(joint, fastener, case).map_or_else(
                 || self.clamp(joint, fastener, case).high,
                 |shared| shared.bolt_force,
             )
         });
-        let force = forces.fold(0.0, f64::max);
-        preload::limits_in_service(fastener, force)
+        forces.fold(0.0, f64::max)
     }
 }
 
@@ -244,7 +253,7 @@ pub fn on_soft_layer(joint: &Joint) -> bool {
     joint.every_filler().any(|filler| {
         matches!(
             filler.kind,
-            FillerKind::Layer { .. } | FillerKind::Table { .. }
+            FillerKind::Layer { .. } | FillerKind::Table { .. } | FillerKind::Foil { .. }
         )
     })
 }

@@ -162,7 +162,7 @@ impl Facets {
             let place = at.conductivity_of(joint, side.plate);
             face.conductivity = side.conducting.at(place) * side.below_spots;
             face.roughness = side.roughness.at(at.roughness[index]);
-            face.slope = finishes[index].slope_at(at.slope[index]);
+            face.slope = finishes[index].slope_at(at.slope[index], face.roughness);
             let factor = side.hardness_factor.at(at.hardness);
             face.hardness = match side.hardness {
                 Hardness::Micro { c1, c2 } => Hardness::Micro {

@@ -48,7 +48,14 @@ impl Group {
         let bolt = bare(fastener);
         let mut found = preload::limit_torques(&bolt, &self.supports);
         if !found.is_empty() {
-            found.extend(self.service_torques(joint, &bolt));
+            let mut in_service = self.service_torques(joint, &bolt);
+            // What is borne longer in service than at assembly ends no torque.
+            in_service.retain(|(name, torque)| {
+                let twin = preload::limits::at_assembly(name);
+                let at_assembly = found.iter().find(|(other, _)| Some(*other) == twin);
+                at_assembly.is_none_or(|(_, first)| torque < first)
+            });
+            found.extend(in_service);
         }
         found.sort_by(|one, other| one.1.total_cmp(&other.1));
         found
@@ -56,7 +63,11 @@ impl Group {
 
     /// Largest torques of the limits in service, N m: 0 where none passes.
     fn service_torques(&self, joint: &Joint, bolt: &Fastener) -> Vec<(&'static str, f64)> {
-        let uses = |torque: f64| self.in_service(joint, &at_torque(bolt, torque));
+        let uses = |torque: f64| {
+            let bolt = at_torque(bolt, torque);
+            let force = self.most_in_service(joint, &bolt);
+            preload::limits_in_service(&bolt, &self.supports, force)
+        };
         let Some(stated) = torque(bolt) else {
             return Vec::new();
         };

@@ -77,6 +77,29 @@ impl Joint {
         })
     }
 
+    /// Height by which a face is out of flat, m: bow or map with thermal sag, else the flatness that is
+    /// stated without its shape with it; none where nothing is stated.
+    ///
+    /// Checked: `a_face_is_out_of_flat_by_whatever_states_it`.
+    pub fn out_of_flat(&self, plate: usize, facing: Facing) -> Option<f64> {
+        let stated = &self.plates[plate];
+        let map = stated.flatness_map.as_ref();
+        let shape = match (stated.bow, map) {
+            (None, None) => match (facing, &stated.underside) {
+                (Facing::Cold, Some(underside)) => underside.flatness,
+                _ => stated.flatness,
+            },
+            (bow, map) => Some(
+                bow.map_or(0.0, f64::abs) + map.map_or(0.0, |map| map.highest() - map.lowest()),
+            ),
+        };
+        let sag = stated.sag.as_ref().map(|_| self.sag_height(plate).abs());
+        match (shape, sag) {
+            (None, None) => None,
+            (shape, sag) => Some(shape.unwrap_or(0.0) + sag.unwrap_or(0.0)),
+        }
+    }
+
     /// Height of the sag of a plate over its bow radius, m: positive concave at the faying face.
     fn sag_height(&self, plate: usize) -> f64 {
         let radius = self.plates[plate].outline.bow_radius();
@@ -170,6 +193,29 @@ mod tests {
         assert!(near(plate.flatness_gap([15e-3, 30e-3], 30e-6), 22.5e-6));
         plate.outline = Outline::Disc { radius: 50e-3 };
         assert!(near(plate.flatness_gap([0.0, 25e-3], 30e-6), 22.5e-6));
+    }
+
+    #[test]
+    fn a_face_is_out_of_flat_by_whatever_states_it() {
+        let mut joint = fixture::joint();
+        joint.plates[0].flatness = None;
+        assert_eq!(joint.out_of_flat(0, Facing::Cold), None);
+        joint.plates[0].flatness = Some(40e-6);
+        assert_eq!(joint.out_of_flat(0, Facing::Cold), Some(40e-6));
+        joint.plates[0].bow = Some(-30e-6);
+        assert_eq!(joint.out_of_flat(0, Facing::Cold), Some(30e-6));
+        joint.plates[0].bow = None;
+        joint.plates[0].flatness_map = FlatnessMap::new(vec![
+            [0.0, 0.0, 5e-6],
+            [0.08, 0.0, 0.0],
+            [0.0, 0.06, 0.0],
+            [0.08, 0.06, -5e-6],
+        ])
+        .map(Arc::new);
+        assert!(near(
+            joint.out_of_flat(0, Facing::Cold).unwrap_or(0.0),
+            10e-6
+        ));
     }
 
     #[test]

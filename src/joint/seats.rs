@@ -228,7 +228,15 @@ pub(super) fn read(
     let (head_seat, friction_radius) = match (bearing, head) {
         (Some(diameter), _) => {
             let seat = annulus(bolt, [2.0 * near, diameter], collector)?;
-            (seat, mean_radius(seat))
+            let own = head.and_then(|head| turning(bolt, (head, head_washer), diameter));
+            if let Some(radius) = own {
+                collector.assume(
+                    record.at("bearing"),
+                    format!("friction of the head at {}", units::show(2.0 * radius, Quantity::Length)),
+                    "the head is narrower than its bearing and turns on its own annulus, by mean diameter",
+                );
+            }
+            (seat, own.unwrap_or_else(|| mean_radius(seat)))
         }
         (None, Some(head)) => pressed(bolt, [Some(head), head_washer], near, collector)?,
         (None, None) => return None,
@@ -281,6 +289,20 @@ fn pressed(
     let outer = washer.outer.min(spread);
     let seat = annulus(bolt, [washer_hole.max(2.0 * hole_radius), outer], collector)?;
     Some((seat, mean_radius(turned)))
+}
+
+/// Mean radius at which a head turns on something wider of a stated bearing diameter, m; none where it
+/// covers the bearing.
+fn turning(
+    bolt: Bolt<'_>,
+    (head, washer): (&SeatRecord, Option<&SeatRecord>),
+    bearing: f64,
+) -> Option<f64> {
+    let hole = washer
+        .and_then(|washer| washer.inner)
+        .unwrap_or(bolt.thread.diameter);
+    let inner = head.inner.unwrap_or(0.0).max(hole);
+    (inner < head.outer && head.outer < bearing).then(|| 0.25 * (inner + head.outer))
 }
 
 /// An annulus of inner and outer diameter, m, unless nothing of it is left.

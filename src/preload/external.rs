@@ -45,6 +45,7 @@ impl ServiceLoad {
     /// ```text
     /// Φ = n δ_P/(δ_S + δ_P)
     /// F_S = F_most + Φ_most F_A,most          F_K = F_least − (1 − Φ_least) F_A,most
+    /// F_S = F_A,most                          once the faces have parted
     /// ```
     ///
     /// | symbol | quantity | SI unit | field |
@@ -75,13 +76,20 @@ impl ServiceLoad {
         Shared {
             load,
             load_factor,
-            bolt_force: clamp.high + load_factor.high * load.high,
+            // Faces that have parted share nothing: the bolt carries the whole load.
+            bolt_force: (clamp.high + load_factor.high * load.high).max(load.high),
             residual: Bounds::uniform([
                 clamp.low - relief,
                 clamp.nominal - (1.0 - load_factor.nominal) * load.nominal,
                 clamp.high - (1.0 - load_factor.high) * load.low,
             ]),
-            separation: clamp.low / relief,
+            separation: if clamp.low <= 0.0 {
+                0.0
+            } else if relief <= 0.0 {
+                f64::INFINITY
+            } else {
+                clamp.low / relief
+            },
         }
     }
 }
@@ -180,6 +188,30 @@ mod tests {
         assert!((found.residual.low - 2000.0).abs() < 1e-9);
         assert!((found.residual.high - 7000.0).abs() < 1e-9);
         assert!((found.separation - 2.0).abs() < 1e-12);
+    }
+
+    #[test]
+    fn a_bolt_whose_faces_have_parted_carries_the_whole_load() {
+        let load = |load: f64| ServiceLoad {
+            load: Bounds::exact(load),
+            introduction: Bounds::exact(1.0),
+        };
+        // Φ 0.2: 7000 N part at 8750 N, from where both laws give the same.
+        let found = load(8750.0).on(&ELASTICITY, Bounds::exact(7000.0));
+        assert!((found.bolt_force - 8750.0).abs() < 1e-9);
+        assert!((found.separation - 1.0).abs() < 1e-12);
+        let parted = load(20e3).on(&ELASTICITY, CLAMP);
+        assert!((parted.bolt_force - 20e3).abs() < 1e-9);
+    }
+
+    #[test]
+    fn faces_that_nothing_clamps_part_without_load() {
+        let none = ServiceLoad {
+            load: Bounds::exact(0.0),
+            introduction: Bounds::exact(0.5),
+        };
+        let open = Bounds::uniform([0.0, 3000.0, 5000.0]);
+        assert_eq!(none.on(&ELASTICITY, open).separation.to_bits(), 0);
     }
 
     #[test]

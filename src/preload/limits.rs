@@ -2,7 +2,7 @@
 
 use crate::{
     catalog::{Datum, Material},
-    joint::{Engagement, Fastener, Joint, Tightening},
+    joint::{Engagement, Facing, Fastener, Joint, Tightening},
     preload::{
         brittle::seat_limit,
         engagement::{PairStrength, ThreadedPart, parent_width, plate_shear_strength, strip_width},
@@ -66,21 +66,20 @@ impl Supports {
 /// Out-of-flatness that a plate is pressed flat from, both faces of its interface together, m; none where
 /// neither states any.
 ///
-/// A bow or a flatness, whichever each face states; of a plate between others the larger side.
+/// [`Joint::out_of_flat`] of each; of a plate between others the larger side.
 pub fn unevenness(joint: &Joint, plate: usize) -> Option<f64> {
-    let stated = |plate: usize| {
-        let plate = &joint.plates[plate];
-        plate.bow.map(f64::abs).or(plate.flatness)
-    };
     let sides = [plate.checked_sub(1), Some(plate)];
     let heights = sides
         .into_iter()
         .flatten()
-        .filter(|side| side + 1 < joint.plates.len());
-    let heights = heights.filter_map(|side| match (stated(side), stated(side + 1)) {
-        (None, None) => None,
-        (one, other) => Some(one.unwrap_or(0.0) + other.unwrap_or(0.0)),
-    });
+        .filter(|side| side + 1 < joint.plates.len())
+        .filter_map(|side| {
+            let warm = joint.out_of_flat(side, Facing::Cold);
+            match (warm, joint.out_of_flat(side + 1, Facing::Warm)) {
+                (None, None) => None,
+                (one, other) => Some(one.unwrap_or(0.0) + other.unwrap_or(0.0)),
+            }
+        });
     heights.max_by(f64::total_cmp)
 }
 
@@ -105,6 +104,28 @@ pub const BRITTLE: &str = "tension beside the seat of a brittle plate";
 pub const IN_SERVICE: &str = "stress in service at yield";
 /// The limit of the proof load in service.
 pub const PROOF_IN_SERVICE: &str = "proof load in service";
+
+/// Each limit that knows no torsion, at assembly and in service.
+const TWINS: [(&str, &str); 6] = [
+    (HEAD_PRESSURE, "pressure under the head in service"),
+    (NUT_PRESSURE, "pressure under the nut in service"),
+    (
+        BRITTLE,
+        "tension beside the seat of a brittle plate in service",
+    ),
+    (PULL_OUT, "pull-out of the insert in service"),
+    (PARENT, "shear around the insert in service"),
+    (STRIPPING, "thread stripping in service"),
+];
+
+/// The limit at assembly that a limit in service judges again; none for stress and proof load, which have
+/// limits of their own there.
+pub fn at_assembly(in_service: &str) -> Option<&'static str> {
+    let mut twins = TWINS.into_iter();
+    twins
+        .find(|(_, name)| *name == in_service)
+        .map(|(name, _)| name)
+}
 
 /// A limit and how far it is used at the highest force.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -160,8 +181,11 @@ pub fn limits(fastener: &Fastener, supports: &Supports) -> Vec<LimitUse> {
 }
 
 /// The limits of a bolt under a force in service, N: equivalent stress at yield with half the torsion of
-/// tightening, and proof load.
-pub fn limits_in_service(fastener: &Fastener, force: f64) -> Vec<LimitUse> {
+/// tightening, proof load, and all that seats, threads and inserts bear.
+///
+/// Head and nut press with the force of the bolt, a load from outside in it: on the safe side where part of
+/// the load enters at the head.
+pub fn limits_in_service(fastener: &Fastener, supports: &Supports, force: f64) -> Vec<LimitUse> {
     let grade = &fastener.grade;
     let load = Load {
         force,
@@ -175,7 +199,13 @@ pub fn limits_in_service(fastener: &Fastener, force: f64) -> Vec<LimitUse> {
         let most = proof_load(&fastener.thread, proof.value);
         LimitUse::new(PROOF_IN_SERVICE, force / most, 1.0)
     });
-    stress.into_iter().chain(proof).collect()
+    let borne = force_limits(fastener, supports)
+        .into_iter()
+        .filter_map(|(name, most)| {
+            let (_, in_service) = TWINS.into_iter().find(|(twin, _)| *twin == name)?;
+            Some(LimitUse::new(in_service, force / most, 1.0))
+        });
+    stress.into_iter().chain(proof).chain(borne).collect()
 }
 
 /// Largest nominal torque of each limit that can be told, N m.

@@ -1,6 +1,10 @@
 //! What a clamp force loses after tightening: settling, relaxation, and what temperature adds or takes.
 
-use crate::{numerics::roots, preload::springs::SpringStack};
+use crate::{
+    numerics::roots,
+    preload::springs::SpringStack,
+    units::{RMS_OVER_MEAN, RZ_OVER_RA},
+};
 
 /// Settling of one contact of each kind, m.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -22,12 +26,13 @@ pub enum Working {
     Transverse,
 }
 
-/// Mean peak-to-valley height Rz of a face of root-mean-square roughness Rq, m: about 5 Rq.
+/// Mean peak-to-valley height Rz of a face of root-mean-square roughness Rq, m, as a stated Rz is read:
+/// Rz = 5.3 Ra, Rq = 1.25 Ra.
 ///
 /// Judgement: Rz is 4 to 7 Ra for machined faces and Ra = Rq/1.25 for a Gaussian one; the guide values of
 /// [`guide_values`] come in classes of a factor four.
 pub fn peak_to_valley(rms_roughness: f64) -> f64 {
-    5.0 * rms_roughness
+    RZ_OVER_RA / RMS_OVER_MEAN * rms_roughness
 }
 
 /// Guide values of settling by mean peak-to-valley height Rz of the faces.
@@ -191,13 +196,14 @@ impl Elasticity {
         } else {
             [force, force + growth / stiff]
         };
+        // Where the springs lie flat all the way, rounding may leave both ends on one side of the root.
         roots::bracketed(
             |force| length(force) - wanted,
             low,
             high,
             1e-12 * high.abs(),
         )
-        .unwrap_or(f64::NAN)
+        .unwrap_or_else(|| roots::halved(|force| length(force) < wanted, low, high))
     }
 
     /// Compliance on the bolt's side at a force, m/N: bolt and springs in series.
@@ -348,5 +354,21 @@ mod tests {
         let through = sprung.after(flat + 500.0, -6e-6);
         assert!(through < flat && through > flat - 10.0, "{through} {flat}");
         assert!((sprung.bolt_side(flat + 1.0) - 5e-9).abs() < 1e-20);
+    }
+
+    // Rounding of a length of a millimetre over 6 nm/N: below 1e-6 N.
+    #[test]
+    fn a_stack_that_stays_flat_gives_as_the_stiff_bolt_whatever_the_force() {
+        let sprung = sprung();
+        for step in 0..4000 {
+            let force = 7000.0 + 1.3 * f64::from(step);
+            let growth = (f64::from(step % 41) - 20.0) * 0.3e-6;
+            let found = sprung.after(force, growth);
+            let stiff = STIFF.after(force, growth);
+            assert!(
+                (found - stiff).abs() < 1e-6,
+                "{force} N, {growth} m: {found} {stiff}"
+            );
+        }
     }
 }

@@ -72,6 +72,17 @@ pub(super) const ENTRIES: &[Entry] = &[
         ],
     ),
     Range.entry(
+        "filler/fluid-in-a-wide-gap",
+        "A fluid is reckoned to fill a wide gap",
+        [
+            "A filler of the model `fluid` wets both faces at any opening, so that it conducts through its own \
+             depth wherever the faces stand apart, beside feet too. A film as it is spread fills some 50 µm; \
+             beyond that there is no more of it than was applied.",
+            "State it as a paste with `applied`: the medium then crosses what it does not fill. Or see to it \
+             that the gap is really filled.",
+        ],
+    ),
+    Range.entry(
         "filler/outside-table",
         "Pressure outside the table of the filler",
         [

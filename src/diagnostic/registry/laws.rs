@@ -384,8 +384,8 @@ pub(super) const ENTRIES: &[Entry] = &[
         ],
     ),
     Law {
-        equation: "R ≥ R_1D + 1/G",
-        range: "isothermal or uniformly heated outer faces; G holds contact, gas, radiation and shank",
+        equation: "1/R ≤ 1/(R_1D + 1/G) + G_shank",
+        range: "isothermal or uniformly heated outer faces; G holds contact, gas and radiation, the shank stands beside",
         source: "Rayleigh's monotonicity: forcing a surface to one temperature can only lower resistance",
     }
     .entry(

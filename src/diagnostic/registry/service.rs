@@ -18,6 +18,18 @@ pub(super) const ENTRIES: &[Entry] = &[
              proportion to pressure.",
         ],
     ),
+    Range.entry(
+        "service/gas-out-of-table",
+        "A gas colder or warmer than its table",
+        [
+            "Conductivity and mean free path of the gas are known between two temperatures and are held at \
+             the nearer end outside. A colder gas conducts less than is reckoned (carbon dioxide at 200 K by \
+             about a third, by the slope of its table), a warmer one more, and below its boiling point it \
+             is no gas at all.",
+            "State the medium that is there at that temperature, or `vacuum` where it has condensed; \
+             `ringsum list gases` tells the range of each.",
+        ],
+    ),
     Grave.entry(
         "service/vacuum-materials",
         "A material that is at odds with vacuum",

@@ -4,13 +4,15 @@ use crate::{
     catalog::{self, MaterialKind},
     diagnostic::Caution,
     estimate::{CaseResult, State, cautions::caution},
-    joint::{Finish, Joint, Plate},
+    joint::{FillerKind, Finish, Joint, Medium, Plate},
 };
 
 /// Roughness range of the slope rule, m.
 const SLOPE_RULE: [f64; 2] = [0.216e-6, 9.6e-6];
 /// Slope factors from here on come from the roughness rule, not from a measurement.
 const BY_RULE: f64 = 1.3;
+/// Gap that a film of fluid is spread to fill, m (common practice, no source).
+const FILM: f64 = 50e-6;
 /// Handbook conductivity serves up to here, K.
 const DATA_TO: f64 = 400.0;
 /// Handbook conductivity serves down to here where no fit is known, K.
@@ -54,6 +56,7 @@ pub(super) fn conductance_cautions(
             ));
         }
     }
+    found.extend(fluid_in_a_wide_gap(joint, cases));
     let records = joint.every_filler();
     for record in records.filter_map(|filler| catalog::filler(&filler.name)) {
         if !record.creeps {
@@ -118,7 +121,7 @@ pub(super) fn material_cautions(joint: &Joint, cases: &[CaseResult]) -> Vec<Caut
             found.push(caution(
                 "material/brittle",
                 format!(
-                    "{}: {} is brittle; bolt it through soft washers at low torque, its bending stress is not checked",
+                    "{}: {} is brittle; bolt it through soft washers at low torque",
                     plate.name, material.name
                 ),
             ));
@@ -126,6 +129,56 @@ pub(super) fn material_cautions(joint: &Joint, cases: &[CaseResult]) -> Vec<Caut
     }
     found.extend((0..joint.interfaces()).filter_map(|interface| galvanic(joint, interface)));
     found
+}
+
+/// A fluid that is reckoned to fill an opening wider than such a film is applied.
+fn fluid_in_a_wide_gap(joint: &Joint, cases: &[CaseResult]) -> Option<Caution> {
+    let fluid = |interface: usize| {
+        let filler = joint.filler(interface)?;
+        matches!(filler.kind, FillerKind::Fluid { .. }).then_some(&filler.name)
+    };
+    let gaps = cases.iter().flat_map(|case| {
+        let interfaces = case.interfaces.iter().enumerate();
+        interfaces.filter_map(|(index, found)| Some((fluid(index)?, found.gap_max?)))
+    });
+    let (name, gap) = gaps.max_by(|one, other| one.1.total_cmp(&other.1))?;
+    (gap > FILM).then(|| {
+        caution(
+            "filler/fluid-in-a-wide-gap",
+            format!(
+                "{name} is reckoned to fill the gap everywhere, up to {:.0} µm; where less is applied, vacuum or gas \
+                 crosses the rest. Take it as a paste with its applied thickness",
+                gap * 1e6
+            ),
+        )
+    })
+}
+
+/// The gas between faces whose temperature its table does not hold, in the case that is farthest out.
+pub(super) fn gas_out_of_table(joint: &Joint, cases: &[CaseResult]) -> Option<Caution> {
+    let Medium::Gas { gas, .. } = &joint.service.medium else {
+        return None;
+    };
+    let (from, to) = (*gas.temperatures.first()?, *gas.temperatures.last()?);
+    let met = cases.iter().flat_map(|case| {
+        (0..joint.interfaces()).map(move |interface| {
+            let [above, below] =
+                [interface, interface + 1].map(|plate| temperatures(joint, (case, plate))[0]);
+            f64::midpoint(above, below)
+        })
+    });
+    let beyond = |temperature: f64| (from - temperature).max(temperature - to);
+    let farthest = met.max_by(|one, other| beyond(*one).total_cmp(&beyond(*other)))?;
+    (beyond(farthest) > 0.0).then(|| {
+        caution(
+            "service/gas-out-of-table",
+            format!(
+                "{} at {farthest:.0} K: its properties are known from {from:.0} to {to:.0} K and are held at the end of \
+                 the table; too much heat crosses a gap that is colder, and none as gas where it condenses",
+                gas.name
+            ),
+        )
+    })
 }
 
 /// Mean and highest temperature of a plate, K: of the solved heat, or those of the sink where there is none.

@@ -299,7 +299,8 @@ impl Chain<'_> {
         })
     }
 
-    /// Force in service of every bolt that a torque would give at nominal friction, N.
+    /// Force in service of every bolt at nominal, N, times the torque of a measurement over that stated: a
+    /// law of wrench torque, in which running torque and losses count alike.
     fn forces_at_torque(&self, case: usize, torque: f64) -> Vec<f64> {
         let nominal = self.nominal_forces(case, self.joint());
         let stated = self.group_of.iter().map(|group| {

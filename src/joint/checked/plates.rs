@@ -4,7 +4,7 @@ use std::sync::Arc;
 
 use crate::{
     catalog::{self, Material},
-    joint::{Bounds, FlatnessMap, Sandwich},
+    joint::{Bounds, FlatnessMap, Sandwich, slope_from_roughness},
     numerics::distribution::deviations,
 };
 
@@ -167,12 +167,15 @@ pub struct Finish {
 }
 
 impl Finish {
-    /// Slope of the asperities at a place of its scatter, 1.
-    pub fn slope_at(&self, place: f64) -> f64 {
+    /// Slope of the asperities at a place of its scatter, 1, of a face whose roughness, m, is somewhere in
+    /// its range: a slope by the rule follows the roughness.
+    pub fn slope_at(&self, place: f64, roughness: f64) -> f64 {
         match self.slope_spread {
             Some(spread) => spread.at(place),
             None if self.slope_factor > 1.0 => {
-                self.slope * self.slope_factor.powf(deviations(place))
+                let steeper =
+                    slope_from_roughness(roughness) / slope_from_roughness(self.roughness.nominal);
+                self.slope * steeper * self.slope_factor.powf(deviations(place))
             }
             // An end of the scatter is infinitely far, and no scatter stays none there.
             None => self.slope,

@@ -15,8 +15,7 @@ use crate::{
     resistance::{
         self, Path,
         columns::{
-            Body, Conduction, Conductivity, Heat, Meeting, Perfect, Placed, Stack, Terminals,
-            nodal,
+            Body, Conduction, Conductivity, Heat, Meeting, Perfect, Placed, Stack, Terminals, nodal,
         },
     },
 };
