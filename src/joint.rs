@@ -68,7 +68,7 @@ use crate::{
 };
 
 pub use checked::*;
-pub use finishes::slope_from_roughness;
+pub use finishes::{peak_to_valley, slope_from_roughness};
 pub use maps::{Files, LONGEST_TABLE, read_flatness};
 pub use mass::Mass;
 pub use missing::NotLeftOut;

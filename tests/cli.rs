@@ -592,6 +592,34 @@ fn one_seed_gives_one_output_and_no_draws_give_no_band() {
 }
 
 #[test]
+fn what_was_not_swept_is_null_and_not_false() {
+    let told = |ends: &[&str]| {
+        let program = ringsum()
+            .args(["torque", "joints/power_module.toml", "--json"])
+            .args("--field cone --draws 0 --steps 3".split(' '))
+            .args(ends);
+        json(&program.assert().success())["stated_stands"].clone()
+    };
+    // 3.5 N·m is stated, and meets the requirement.
+    let beyond = told(&["--from", "3.675 N·m", "--to", "4.2 N·m"]);
+    assert_eq!(beyond["requirement_met"], serde_json::Value::Null);
+    assert_eq!(beyond["inside"], serde_json::Value::Null);
+    let within = told(&["--from", "2 N·m", "--to", "4.2 N·m"]);
+    assert_eq!(within["requirement_met"], true);
+    assert_eq!(within["inside"], true);
+}
+
+#[test]
+fn a_share_without_its_unit_is_told_with_one_that_is_taken() {
+    let program = ringsum().args(["torque", "joints/power_module.toml", "--confidence", "0.9"]);
+    let told = stderr(&program.assert().code(2));
+    assert!(
+        told.contains("\"90 %\"") && !told.contains("0.9 %"),
+        "{told}"
+    );
+}
+
+#[test]
 fn cautions_end_with_three_only_when_strict() {
     let folder = starter();
     within(&folder)

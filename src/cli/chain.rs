@@ -336,9 +336,11 @@ pub fn torque(text: &str) -> Result<f64, String> {
 
 /// A share of the draws from the command line, 1.
 pub fn confidence(text: &str) -> Result<f64, String> {
-    let share = units::parse(text, Quantity::Ratio).map_err(|fault| match fault.help {
-        Some(help) => format!("{}; {help}", fault.message),
-        None => fault.message,
+    let share = units::parse(text, Quantity::Ratio).map_err(|fault| {
+        format!(
+            "{}; write a share of the draws such as \"90 %\"",
+            fault.message
+        )
     })?;
     if (LEAST_SHARE..=MOST_SHARE).contains(&share) {
         Ok(share)

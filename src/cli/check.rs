@@ -138,7 +138,7 @@ pub fn read_variant(
             if !names.is_empty() {
                 let count = names.len();
                 console.message(&format!(
-                    "{}: {count} variant{} left aside; ringsum compare reads them, --variant of estimate takes one\n",
+                    "{}: {count} variant{} left aside; ringsum compare reads them, --variant of estimate and report takes one\n",
                     source.name,
                     if count == 1 { "" } else { "s" },
                 ));

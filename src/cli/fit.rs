@@ -227,7 +227,7 @@ impl Fit {
         match (&self.unknown, self.files.as_slice()) {
             (Some(_), [_joint, tables @ ..]) if !tables.is_empty() => Ok(tables),
             (Some(_), _) => Err(Trouble::usage(
-                "an unknown is asked for, but no joint",
+                "an unknown takes a joint file and a table of what it conducted",
                 "name the joint file before the table: `ringsum fit joint.toml points.csv --unknown roughness`",
             )),
             (None, [first, _, ..]) if first.extension().is_some_and(|ending| ending == "toml") => {

@@ -156,6 +156,19 @@ pub enum BestBy {
 }
 
 impl TorqueSweep {
+    /// Whether a torque lies between the first and the last that were swept.
+    pub fn sweeps(&self, torque: f64) -> bool {
+        let ends = self.points.first().zip(self.points.last());
+        ends.is_some_and(|(first, last)| (first.torque..=last.torque).contains(&torque))
+    }
+
+    /// Whether a torque meets the requirement; none where nothing is required or it was not swept.
+    pub fn heat_met_at(&self, torque: f64) -> Option<bool> {
+        self.window
+            .heat_met_at(torque)
+            .filter(|_| self.sweeps(torque))
+    }
+
     /// What makes the best torque the best.
     pub fn best_by(&self) -> BestBy {
         if !self.resists() && self.held_minimum().is_some() {

@@ -9,7 +9,7 @@ use crate::{
         tree::short,
         walk::missing,
     },
-    units::{self, Quantity, RMS_OVER_MEAN},
+    units::{self, Quantity, RMS_OVER_MEAN, RZ_OVER_RA},
 };
 
 /// One standard deviation of the slope, as a factor, when the rule gives it: a judgement from the
@@ -32,6 +32,15 @@ const SLOPE_FACTOR: f64 = 1.4;
 /// Checked: `slope_follows_the_roughness`, `slope_rule_gives_its_table`.
 pub fn slope_from_roughness(roughness: f64) -> f64 {
     0.125 * (roughness * 1e6).powf(0.402)
+}
+
+/// Mean peak-to-valley height Rz of a face of root-mean-square roughness Rq, m, as a stated Rz is read:
+/// Rz = 5.3 Ra, Rq = 1.25 Ra.
+///
+/// Judgement: Rz is 4 to 7 Ra for machined faces and Ra = Rq/1.25 for a Gaussian one; the guide values of
+/// settling come in classes of a factor four.
+pub fn peak_to_valley(rms_roughness: f64) -> f64 {
+    RZ_OVER_RA / RMS_OVER_MEAN * rms_roughness
 }
 
 /// Reads a faying face of a plate, under its key.

@@ -302,7 +302,7 @@ fn turning(
         .and_then(|washer| washer.inner)
         .unwrap_or(bolt.thread.diameter);
     let inner = head.inner.unwrap_or(0.0).max(hole);
-    (inner < head.outer && head.outer < bearing).then(|| 0.25 * (inner + head.outer))
+    (inner < head.outer && head.outer < bearing).then_some(0.25 * (inner + head.outer))
 }
 
 /// An annulus of inner and outer diameter, m, unless nothing of it is left.

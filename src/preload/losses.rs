@@ -1,10 +1,6 @@
 //! What a clamp force loses after tightening: settling, relaxation, and what temperature adds or takes.
 
-use crate::{
-    numerics::roots,
-    preload::springs::SpringStack,
-    units::{RMS_OVER_MEAN, RZ_OVER_RA},
-};
+use crate::{numerics::roots, preload::springs::SpringStack};
 
 /// Settling of one contact of each kind, m.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -24,15 +20,6 @@ pub enum Working {
     Axial,
     /// Across the bolt.
     Transverse,
-}
-
-/// Mean peak-to-valley height Rz of a face of root-mean-square roughness Rq, m, as a stated Rz is read:
-/// Rz = 5.3 Ra, Rq = 1.25 Ra.
-///
-/// Judgement: Rz is 4 to 7 Ra for machined faces and Ra = Rq/1.25 for a Gaussian one; the guide values of
-/// [`guide_values`] come in classes of a factor four.
-pub fn peak_to_valley(rms_roughness: f64) -> f64 {
-    RZ_OVER_RA / RMS_OVER_MEAN * rms_roughness
 }
 
 /// Guide values of settling by mean peak-to-valley height Rz of the faces.

@@ -1,11 +1,9 @@
 //! The clamped stack of a fastener in its joint: grip, compliance, guide settling.
 
 use crate::{
-    joint::{Engagement, Facing, Fastener, Isolating, Joint, Plate},
+    joint::{Engagement, Facing, Fastener, Isolating, Joint, Plate, peak_to_valley},
     preload::{
-        losses::{
-            Compliance, Contacts, Elasticity, Part, Working, growth, guide_values, peak_to_valley,
-        },
+        losses::{Compliance, Contacts, Elasticity, Part, Working, growth, guide_values},
         resilience::{
             BoltShape, Clamped, ConeKind, FarEnd, HeadForm, StackLayer, bolt_compliance,
             stack_compliance,

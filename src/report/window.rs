@@ -155,12 +155,11 @@ fn stated(sweep: &TorqueSweep) -> String {
         ),
         Side::Most => format!("beyond {}, at {} N·m", limit.name, four(limit.torque)),
     }));
-    let swept = sweep.points.first().zip(sweep.points.last());
-    let swept = swept.is_some_and(|(first, last)| (first.torque..=last.torque).contains(&torque));
-    match window.heat_met_at(torque) {
-        // What was not swept is not known.
-        Some(false) if swept => against.push(missed(window, torque)),
-        Some(_) if !swept => against.push("not swept, so that its heat is not judged".to_owned()),
+    match sweep.heat_met_at(torque) {
+        Some(false) => against.push(missed(window, torque)),
+        None if window.heat.is_some() => {
+            against.push("not swept, so that its heat is not judged".to_owned());
+        }
         _ => {}
     }
     if window.most().is_none() {

@@ -150,7 +150,10 @@ fn faults_of_a_table_are_told_at_their_places() {
             &["fit", "rig.csv", "--branch", "unloading"],
             "no such branch",
         ),
-        (&["fit", "rig.csv", "--unknown", "roughness"], "no joint"),
+        (
+            &["fit", "rig.csv", "--unknown", "roughness"],
+            "takes a joint file and a table",
+        ),
         (&["fit", "lid.toml", "rig.csv"], "no unknown of it"),
         (
             &[

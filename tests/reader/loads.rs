@@ -29,6 +29,25 @@ fn a_load_is_read_with_what_is_assumed_of_it() {
     assert!(near(load.in_case("cold").nominal, any.nominal));
 }
 
+// The head of the plain joint and its mean radius of friction are those of the catalogue.
+#[test]
+fn a_wider_bearing_does_not_move_where_the_head_turns() {
+    let radius = |bearing: &str| {
+        let joint = read(&text(&format!("hole = \"4.5 mm\"\n{bearing}")));
+        let assumed = joint.assumptions.iter();
+        let told = assumed.filter(|each| each.value.starts_with("friction of the head"));
+        (joint.fasteners[0].friction_radius, told.count())
+    };
+    let (own, untold) = radius("");
+    let (wide, told) = radius("bearing = \"18 mm\"");
+    // On the hole of 4.5 mm by itself, on the 4 mm of the thread where something wider lies between.
+    assert!((own - wide) < 0.13e-3 && own >= wide, "{own} {wide}");
+    assert_eq!((untold, told), (0, 1));
+    let (narrow, told) = radius("bearing = \"6 mm\"");
+    assert!(near(narrow, 0.25 * (4.5e-3 + 6e-3)));
+    assert_eq!(told, 0);
+}
+
 #[test]
 fn a_load_of_a_case_needs_the_case() {
     assert_eq!(

@@ -125,7 +125,7 @@ impl Gap {
 /// ```
 ///
 /// Valid: M/σ from 0.01 (below, the value there), any Y; within 2.6 % of the integral down to Y/σ of 2,
-/// and 2 % from 4 up. Falls with Y, so that load never lowers it.
+/// and 2.2 % from 4 up. Falls with Y, so that load never lowers it.
 /// Source: Yovanovich, `DeVaal` & Hegazy 1982, correction from memory, published for Y/σ below 4. Beyond,
 /// the excess fades without a corner, fitted here to the integral.
 /// Checked: `corrected_gas_law_agrees_with_the_integral`, `a_wide_gap_conducts_as_the_integral_says`.

@@ -11,8 +11,8 @@ pub(super) const ENTRIES: &[Entry] = &[
         "A result in air says little about vacuum",
         [
             "In air most heat crosses between the bolts through a few microns of gas. Without it the \
-             reference joint (four M5 on 80 × 80 × 5 mm aluminium) adds 0.278 instead of 0.074 K/W, \
-             almost four times as much. A bench test in air can hide a joint that fails in orbit or \
+             reference joint (four M5 on 80 × 80 × 5 mm aluminium) adds 0.278 instead of 0.084 K/W, \
+             more than three times as much. A bench test in air can hide a joint that fails in orbit or \
              in a cryostat; leak and partial pressure matter down to about 1 Pa.",
             "Estimate and test in the medium of service. Below 100 Pa gas conductance falls in \
              proportion to pressure.",

@@ -148,8 +148,9 @@ pub(super) const ENTRIES: &[Entry] = &[
         [
             "`compare` puts joint files, or the `[[variant]]` tables of one, in one table: results, strength, \
              mass, the worst lost bolt, and whether the choice matters. A variant is a name and what differs, \
-             by the paths of `--set`, such as `fastener.pattern.count = [3, 2]`. Other commands leave variants \
-             aside and say so; `estimate --variant NAME` takes one.",
+             by the paths of `--set`, such as `fastener.pattern.count = [3, 2]`. `report` compares them on its page; \
+             `estimate` and `report` take one with `--variant NAME`. Other commands leave variants aside and say \
+             so.",
             "Both joints of a pair are drawn with common numbers: the same lot and the same tool stand in both, \
              so that wide bands that overlap still tell which is better. `estimate --without 3` leaves a bolt \
              out: its hole stays, it neither clamps nor conducts.",
@@ -235,8 +236,8 @@ pub(super) const ENTRIES: &[Entry] = &[
         [
             "A file appears whole or not at all, and never over another without `--force`: it is written as \
              `.ringsum-…` in the folder it belongs to and then renamed. Every target is checked before anything \
-             is computed.",
-            "Failures leave nothing behind. A process that is stopped in the very moment of writing (Ctrl-C, \
+             is computed, but for those of `arrange --write`, which the search names.",
+            "A file that fails leaves nothing of itself behind; those written before it stay. A process that is stopped in the very moment of writing (Ctrl-C, \
              kill -9, power) cannot clean up: delete the `.ringsum-…` file it may leave, nothing reads it.",
         ],
     ),

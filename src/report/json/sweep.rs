@@ -64,11 +64,11 @@ pub struct TorqueResult {
 /// How the stated torque stands to the window.
 #[derive(Serialize, JsonSchema)]
 struct StatedStands {
-    /// Whether it lies inside what heat and strength allow; null where there is no window
+    /// Whether it lies inside what heat and strength allow; null where there is no window, and where it was not swept and breaks no limit
     inside: Option<bool>,
     /// Limits of strength and separation that it breaks
     breaks: Vec<LimitTold>,
-    /// Whether it meets the requirement; null where nothing is required
+    /// Whether it meets the requirement; null where nothing is required and where it was not swept
     requirement_met: Option<bool>,
 }
 
@@ -134,10 +134,12 @@ pub fn torque(sweep: &TorqueSweep) -> Value {
 }
 
 fn told(sweep: &TorqueSweep) -> TorqueResult {
-    let inside = sweep
-        .window
-        .both
-        .map(|both| both.low.torque <= sweep.stated && sweep.stated <= both.high.torque);
+    let broken = sweep.window.broken_at(sweep.stated);
+    // What was not swept is not known, unless strength forbids it.
+    let known = sweep.sweeps(sweep.stated) || !broken.is_empty();
+    let both = sweep.window.both.filter(|_| known);
+    let inside =
+        both.map(|both| both.low.torque <= sweep.stated && sweep.stated <= both.high.torque);
     TorqueResult {
         head: HEAD,
         file: None,
@@ -149,8 +151,8 @@ fn told(sweep: &TorqueSweep) -> TorqueResult {
         stated: sweep.stated,
         stated_stands: StatedStands {
             inside,
-            breaks: window::limits(&sweep.window.broken_at(sweep.stated)),
-            requirement_met: sweep.window.heat_met_at(sweep.stated),
+            breaks: window::limits(&broken),
+            requirement_met: sweep.heat_met_at(sweep.stated),
         },
         bends: sweep.bends,
         largest: sweep

@@ -227,7 +227,7 @@ fn heat(estimate: &Estimate, case: &CaseResult) -> Step {
         "Heat through the plates is a network of rings and cells"
     } else {
         laws.push("law/conduction");
-        "Heat through the plates is solved in three dimensions on the grid of the contact"
+        "Heat through the plates is solved in full on the grid of the contact"
     };
     let told = vec![
         format!(
