@@ -15,6 +15,7 @@ mod drivers;
 mod estimate;
 mod explain;
 mod field;
+mod figure;
 mod fit;
 mod hidden;
 mod input;
@@ -108,9 +109,7 @@ pub fn run(arguments: impl IntoIterator<Item = OsString>) -> ExitCode {
     match outcome {
         Ok(outcome) => ExitCode::from(outcome.code()),
         // Whoever reads has read enough: `ringsum list | head` is no failure.
-        Err(Trouble::Output(fault)) if fault.kind() == io::ErrorKind::BrokenPipe => {
-            ExitCode::SUCCESS
-        }
+        Err(trouble) if trouble.is_closed_pipe() => ExitCode::SUCCESS,
         Err(trouble) => {
             console.trouble(&trouble);
             ExitCode::from(trouble.outcome().code())

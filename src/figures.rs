@@ -79,6 +79,9 @@ pub enum Drawing {
     Evidence(Box<EvidencePlot>),
 }
 
+/// Most points across or down a figure.
+const LONGEST: usize = 4000;
+
 /// Why a drawing cannot be made.
 #[derive(Clone, Debug, PartialEq, Eq, thiserror::Error)]
 pub enum FigureError {
@@ -91,6 +94,9 @@ pub enum FigureError {
     /// The numbers do not fit together, such as a field with too few cells.
     #[error("cannot draw {0}: its sizes do not fit together")]
     Shape(&'static str),
+    /// More than a sheet holds, in points.
+    #[error("the figure would be {0} points long, and {LONGEST} are the most; draw fewer at once")]
+    TooLong(usize),
     /// The drawing library or the image encoder failed.
     #[error("the figure could not be written: {0}")]
     Output(String),

@@ -11,6 +11,9 @@ use std::{
 };
 use tempfile::{TempDir, tempdir};
 
+#[path = "hostile/owed.rs"]
+mod owed;
+
 const RINGSUM: &str = env!("CARGO_BIN_EXE_ringsum");
 const LID: &str = include_str!("../joints/service_lid.toml");
 
@@ -95,14 +98,19 @@ fn files_that_are_too_large_are_refused_unread() {
         let arguments: Vec<&str> = command.split(' ').chain(["huge.toml"]).collect();
         refused(&folder, &arguments, &["huge.toml", "larger than 1 MB"]);
     }
+    fs::rename(
+        folder.path().join("huge.toml"),
+        folder.path().join("huge.csv"),
+    )
+    .expect("the test can do this");
     refused(
         &folder,
-        &["fit", "huge.toml"],
-        &["huge.toml", "larger than 10 MB"],
+        &["fit", "huge.csv"],
+        &["huge.csv", "larger than 10 MB"],
     );
     fs::write(folder.path().join("joint.toml"), LID).expect("the test can do this");
     for (state, says) in [
-        ("huge.toml", "larger than 100 MB"),
+        ("huge.csv", "larger than 100 MB"),
         ("/dev/zero", "is not an ordinary file"),
     ] {
         refused(
@@ -439,9 +447,19 @@ fn folders_that_take_no_file_are_told() {
             .expect("the test can do this")
     };
 
-    let below_a_file = run(&draw("joint.toml/out"));
-    assert_eq!(below_a_file.status.code(), Some(1), "{below_a_file:?}");
-    assert!(told(&below_a_file).contains("joint.toml/out"));
+    // Before anything is solved, for which there is not enough memory.
+    refused(
+        &folder,
+        &[
+            "draw",
+            "joint.toml",
+            "--out",
+            "joint.toml/out",
+            "--memory",
+            "1MB",
+        ],
+        &["`joint.toml` is a file"],
+    );
 
     let locked = folder.path().join("locked");
     fs::create_dir(&locked).expect("the test can do this");
@@ -470,9 +488,19 @@ fn out_names_a_folder_and_says_so() {
         refused(
             &folder,
             &arguments("x.svg"),
-            &["`x.svg` is the name of a figure", "name a folder"],
+            &["`x.svg` is the name of a file", "name a folder"],
+        );
+        refused(
+            &folder,
+            &arguments("result.json"),
+            &["`result.json` is the name of a file", "name a folder"],
         );
     }
+    refused(
+        &folder,
+        &["report", "joint.toml", "--out", "page.pdf"],
+        &["`page.pdf` does not end in .html", "name a page"],
+    );
     assert_eq!(names(folder.path()), ["joint.toml", "taken"]);
 }
 

@@ -538,6 +538,28 @@ fn overrides_act_on_any_field() {
 }
 
 #[test]
+fn an_override_of_one_plate_leaves_what_the_others_state() {
+    let hole = |stated: &str| {
+        let text = plain().replace("[fastener]", &format!("[fastener]\nhole = {stated}"));
+        let joint = read_with(&text, &["fastener.hole.panel=\"5.7 mm\""]);
+        let bolt = &joint.fasteners[0];
+        [0, 1].map(|plate| 2.0 * bolt.hole_radius[plate])
+    };
+    for stated in [
+        "\"5.8 mm\"",
+        "[\"5.8 mm\", \"5.9 mm\"]",
+        "{ box = \"5.8 mm\", panel = \"5.9 mm\" }",
+        "{ \"*\" = \"5.8 mm\" }",
+    ] {
+        let [warm, cold] = hole(stated);
+        assert!(
+            near(warm, 5.8e-3) && near(cold, 5.7e-3),
+            "{stated}: {warm} {cold}"
+        );
+    }
+}
+
+#[test]
 fn an_override_equals_the_same_edit_of_the_file() {
     let edited = plain().replace("2 N·m", "3 N·m");
     assert_eq!(

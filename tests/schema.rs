@@ -89,6 +89,8 @@ fn runs() -> Vec<(&'static str, &'static str, Vec<String>)> {
         run("check", "Checked", &joint);
     }
     run("explain", "CodeTold", "preload/over-yield");
+    run("list", "Listed", "materials");
+    run("list", "Listed", "threads M5");
     let solved = "--resolution fast --draws";
     for (joint, draws) in [
         ("joints/converter_box.toml", "0"),
@@ -141,6 +143,17 @@ fn runs() -> Vec<(&'static str, &'static str, Vec<String>)> {
         "UnknownResult",
         "joints/rig_coupon.toml joints/rig_coupon_torque.csv --unknown roughness --field cone",
     );
+    // Without an answer: one joint is no comparison, and the table holds no readings on unloading.
+    run(
+        "compare",
+        "Unanswered",
+        "joints/rig_coupon.toml --field cone --draws 0",
+    );
+    run(
+        "fit",
+        "Unanswered",
+        "joints/rig_coupon_torque.csv --branch unloading",
+    );
     runs
 }
 
@@ -156,6 +169,7 @@ fn form(command: &str, value: &Value) -> &'static str {
         "compare" => "CompareResult",
         "explain" if value.get("entries").is_some() => "CodesTold",
         "explain" => "CodeTold",
+        "list" => "Listed",
         "fit" if value["fit"] == "law" => "SeriesResult",
         "fit" => "UnknownResult",
         _ => "Checked",

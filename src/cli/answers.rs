@@ -6,10 +6,9 @@ use crate::{
         check::Refused,
         console::{Console, Layout, Outcome, Trouble},
         input::{self, Source},
-        output::{self, Existing, Target},
+        output::Permit,
         results::Results,
     },
-    figures::Format,
     joint::Joint,
     report::{
         csv::{Ended, Table},
@@ -38,8 +37,8 @@ pub struct Form<'a> {
     pub json: bool,
     /// The table that is written beside the JSON of a folder.
     pub table: &'static Table,
-    /// The folder for results, and what to do with those that exist.
-    pub out: Option<(&'a Path, Existing)>,
+    /// The folder for results, and what may be written.
+    pub out: Option<(&'a Path, Permit<'a>)>,
 }
 
 /// The answers of a command, file by file.
@@ -52,11 +51,19 @@ pub struct Answers<'a> {
     out: Option<Results>,
 }
 
+/// What was found of one joint.
+pub struct Found<'a> {
+    /// The answer.
+    pub answer: Box<dyn Answer + 'a>,
+    /// Whether the files asked for beside it were written; it is told even where they were not. They
+    /// come before it, so that none is lost where nobody reads the answer.
+    pub written: Result<(), Trouble>,
+}
+
 /// How a command reads one joint.
 type Read<'a> = dyn Fn(&Path, &mut Console) -> Result<(Source, Joint), Refused> + Sync + 'a;
 /// What a command finds of one joint.
-type Find<'a> =
-    dyn Fn((&Source, &Joint), &mut Console) -> Result<Box<dyn Answer + 'a>, Trouble> + Sync + 'a;
+type Find<'a> = dyn Fn((&Source, &Joint), &mut Console) -> Result<Found<'a>, Trouble> + Sync + 'a;
 
 impl<'a> Answers<'a> {
     /// Checks every target before anything is computed.
@@ -64,10 +71,10 @@ impl<'a> Answers<'a> {
         let files = batch.files(given);
         input::stdin_at_most_once(&files)?;
         let out = match form.out {
-            Some((folder, existing)) => Some(Results::new(
+            Some((folder, permit)) => Some(Results::new(
                 (folder, form.table),
                 &files,
-                (existing, batch.part()),
+                (permit, batch.part()),
             )?),
             None => None,
         };
@@ -107,28 +114,38 @@ impl<'a> Answers<'a> {
         let (source, joint) = match read(path, console) {
             Ok(read) => read,
             Err(refused) => {
-                let row = self
-                    .table
-                    .without(&input::name(path), Ended::Faulty, &refused.first());
-                self.put(index, (&refused.json(), row), console)?;
+                let name = input::name(path);
+                let row = self.table.without(&name, Ended::Faulty, &refused.first());
+                self.put((index, &name), (&refused.json(), row), console)?;
                 return Err(refused.trouble());
             }
         };
         let name = &source.name;
         match find((&source, &joint), console) {
-            Ok(answer) => {
+            Ok(Found { answer, written }) => {
+                let outcome = match written {
+                    Ok(()) => answer.outcome(),
+                    Err(trouble) => {
+                        console.trouble(&trouble.of_file(name));
+                        Outcome::Failed
+                    }
+                };
                 if self.json || self.out.is_some() {
                     let mut object = answer.object();
                     object["file"] = name.as_str().into();
+                    let ended = match answer.outcome() {
+                        Outcome::Interrupted => Ended::Interrupted,
+                        _ => Ended::Done,
+                    };
                     let rows = match &self.out {
-                        Some(_) => self.table.of_file(name, &answer.rows()),
+                        Some(_) => self.table.of_file(name, ended, &answer.rows()),
                         None => String::new(),
                     };
-                    self.put(index, (&object, rows), console)?;
+                    self.put((index, name), (&object, rows), console)?;
                 } else {
                     console.result(&answer.text())?;
                 }
-                Ok(answer.outcome())
+                Ok(outcome)
             }
             Err(trouble) => {
                 let (message, ended) = match &trouble {
@@ -138,7 +155,7 @@ impl<'a> Answers<'a> {
                 };
                 let object = listing::unanswered(name, &message);
                 let row = self.table.without(name, ended, &message);
-                self.put(index, (&object, row), console)?;
+                self.put((index, name), (&object, row), console)?;
                 Err(trouble.of_file(name))
             }
         }
@@ -147,31 +164,15 @@ impl<'a> Answers<'a> {
     /// Writes an object where results go to files, prints it where JSON is asked for.
     fn put(
         &self,
-        index: usize,
+        place: (usize, &str),
         (object, rows): (&serde_json::Value, String),
         console: &mut Console,
     ) -> Result<(), Trouble> {
         if let Some(out) = &self.out {
-            out.put(index, object, rows)?;
+            out.put(place, object, rows)?;
         } else if self.json {
             console.json(object, Layout::of_batch(self.given))?;
         }
         Ok(())
     }
-}
-
-/// A figure of one joint, with its format; of several joints none is drawn.
-pub fn figure(
-    asked: Option<&Path>,
-    files: &[PathBuf],
-    existing: Existing,
-) -> Result<Option<(Format, Target)>, Trouble> {
-    let Some(path) = asked else { return Ok(None) };
-    if files.len() > 1 {
-        return Err(Trouble::usage(
-            format!("--draw draws one joint, and {} are named", files.len()),
-            "draw them one by one, or leave --draw out",
-        ));
-    }
-    Ok(Some((output::format(path)?, Target::new(path, existing)?)))
 }

@@ -5,14 +5,15 @@ mod layouts;
 
 use crate::{
     cli::{
-        answers::{self, Answers, Form},
+        answers::{self, Answers, Form, Found},
         batch::Batch,
-        chain::{self, Choice, Fineness},
+        chain::{Choice, Fineness},
         check,
         console::{Console, Outcome, Trouble},
         drawings,
+        figure::Figure,
         input::{self, Source},
-        output::{Existing, Target},
+        output::{Existing, Permit, Target},
         shown::Shown,
     },
     figures::{ArrangePlot, Drawing, PlanShape},
@@ -135,18 +136,22 @@ impl Read<'_> {
 impl Arrange {
     /// Searches every joint, prints the best, and tells by the exit code whether it was interrupted.
     pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
-        let existing = Existing::from_force(self.force);
-        let figure = answers::figure(self.draw.as_deref(), &self.files, existing)?;
+        let permit = Permit::new(self.force, &self.files);
+        let figure = Figure::asked(
+            self.draw.as_deref(),
+            self.files.len(),
+            (permit, self.shown.system()),
+        )?;
         let checkpoint = self.checkpoint()?;
         let layouts = match &self.write {
-            Some(folder) => Some(Layouts::new(folder, &self.files, existing)?),
+            Some(folder) => Some(Layouts::new(folder, &self.files, permit)?),
             None => None,
         };
         let stop = stopped_by_keyboard()?;
         let form = Form {
             json: self.json,
             table: &csv::LAYOUTS,
-            out: self.out.as_deref().map(|folder| (folder, existing)),
+            out: self.out.as_deref().map(|folder| (folder, permit)),
         };
         Answers::new(&self.batch, &self.files, &form)?.run(
             console,
@@ -158,24 +163,16 @@ impl Arrange {
                 }
                 let mut keeper = Keeper::new(checkpoint.clone(), self.batch.watch());
                 let answered = self.searched(read, (&stop, &mut keeper), console)?;
-                // What was found is told even where a file of it cannot be written.
-                let drawn = figure.as_ref().map_or(Ok(()), |(format, target)| {
-                    target.write(&chain::render(&answered.plot(), *format, answered.system)?)?;
-                    console.message(&format!("wrote {}\n", target.path.display()));
-                    Ok(())
+                let drawn = figure
+                    .as_ref()
+                    .map_or(Ok(()), |figure| figure.write(&answered.plot(), console));
+                let written = layouts.as_ref().map_or(Ok(()), |layouts| {
+                    layouts.write(read, &answered.answer, console)
                 });
-                let written = drawn.and_then(|()| match &layouts {
-                    Some(layouts) => layouts.write(read, &answered.answer, console),
-                    None => Ok(()),
-                });
-                let failed = match keeper.kept().and(written) {
-                    Ok(()) => false,
-                    Err(trouble) => {
-                        console.trouble(&trouble);
-                        true
-                    }
-                };
-                Ok(Box::new(Answered { failed, ..answered }))
+                Ok(Found {
+                    answer: Box::new(answered),
+                    written: keeper.kept().and(drawn).and(written),
+                })
             },
         )
     }
@@ -218,7 +215,6 @@ impl Arrange {
             heads: heads(&search, &answer),
             answer,
             defaults,
-            failed: false,
             system: self.shown.system(),
         })
     }
@@ -248,12 +244,11 @@ impl Arrange {
                 "search them one by one where they shall be resumed",
             ));
         }
-        let existing = if self.resume.as_ref() == Some(path) {
-            Existing::Replace
+        if self.resume.as_ref() == Some(path) {
+            Target::new(path, Existing::Replace)?;
         } else {
-            Existing::from_force(self.force)
-        };
-        Target::new(path, existing)?;
+            Permit::new(self.force, &self.files).target(path)?;
+        }
         Ok(Some(path.clone()))
     }
 }
@@ -265,8 +260,6 @@ struct Answered {
     plates: Vec<PlanShape>,
     keep_out: Vec<PlanShape>,
     heads: Vec<f64>,
-    /// Whether a file of it could not be written.
-    failed: bool,
     /// The units of its text.
     system: System,
 }
@@ -296,9 +289,7 @@ impl answers::Answer for Answered {
     }
 
     fn outcome(&self) -> Outcome {
-        if self.failed {
-            Outcome::Failed
-        } else if self.answer.complete {
+        if self.answer.complete {
             Outcome::Done
         } else {
             Outcome::Interrupted

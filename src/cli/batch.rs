@@ -100,13 +100,25 @@ fn one_by_one(
     console: &mut Console,
     work: &Work,
 ) -> Result<Vec<Outcome>, Trouble> {
-    let files = files.iter().enumerate();
-    files
-        .map(|(index, path)| {
-            let done = work(index, path, console);
-            settled(done, console)
-        })
-        .collect()
+    let mut outcomes = Vec::with_capacity(files.len());
+    for (index, path) in files.iter().enumerate() {
+        let done = work(index, path, console);
+        match settled(done, console) {
+            Ok(outcome) => outcomes.push(outcome),
+            Err(trouble) => return cut_short(outcomes, trouble),
+        }
+    }
+    Ok(outcomes)
+}
+
+/// What the files before came to, where nobody reads any further.
+fn cut_short(mut outcomes: Vec<Outcome>, trouble: Trouble) -> Result<Vec<Outcome>, Trouble> {
+    if trouble.is_closed_pipe() {
+        outcomes.push(Outcome::Done);
+        Ok(outcomes)
+    } else {
+        Err(trouble)
+    }
 }
 
 /// What became of a file; only an output that takes no more ends the batch.
@@ -173,7 +185,7 @@ fn at_once(
                     Ok(outcome) => outcomes.push(outcome),
                     Err(trouble) => {
                         next.store(files.len(), Ordering::Relaxed);
-                        return Err(trouble);
+                        return cut_short(outcomes, trouble);
                     }
                 }
             }

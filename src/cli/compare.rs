@@ -8,15 +8,16 @@ use crate::{
         drawings,
         draws::Draws,
         field::{self, Field},
+        figure::Figure,
         input,
-        output::{Existing, Target, format},
+        output::Permit,
         results::stem,
         shown::Shown,
     },
     estimate::FieldMap,
     figures::{ComparisonPlot, ComparisonRow, Drawing},
     joint::Version,
-    report::{comparison, json, number::brief},
+    report::{comparison, json, listing, number::brief},
     uncertainty::{Compared, Comparison, Sense},
 };
 use clap::Args;
@@ -75,48 +76,52 @@ impl Compare {
     /// Reads every file with its variants, tells all faults, then compares.
     pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
         input::stdin_at_most_once(&self.files)?;
-        let figure = match &self.draw {
-            Some(path) => Some((
-                format(path)?,
-                Target::new(path, Existing::from_force(self.force))?,
-            )),
-            None => None,
-        };
+        let permit = Permit::new(self.force, &self.files);
+        // Several joints are drawn on one sheet.
+        let figure = Figure::asked(self.draw.as_deref(), 1, (permit, self.shown.system()))?;
         let choice = self.field.choice()?;
         let Some(entries) = self.entries(console)? else {
             return Ok(Outcome::Faulty);
         };
-        if entries.len() < 2 {
-            return Err(Trouble::usage(
-                "there is only one joint, and a comparison needs two",
-                "name several files, or add `[[variant]]` tables with a name and what differs",
-            ));
-        }
-        let (found, maps) = self.compared(&entries, (choice, figure.is_some()))?;
-        if let Some((format, target)) = figure {
+        let (found, maps) = match self.compared(&entries, (choice, figure.is_some())) {
+            Ok(found) => found,
+            Err(trouble) => {
+                if let (true, Some(why)) = (self.json, trouble.sentence()) {
+                    let files: Vec<String> =
+                        self.files.iter().map(|path| input::name(path)).collect();
+                    let object = listing::unanswered(&files.join(", "), why);
+                    console.json(&object, Layout::Indented)?;
+                }
+                return Err(trouble);
+            }
+        };
+        let written = figure.map_or(Ok(()), |figure| {
             let plot = plot(&entries, (&found, &maps));
-            let bytes = chain::render(
-                &Drawing::Comparison(Box::new(plot)),
-                format,
-                self.shown.system(),
-            )?;
-            target.write(&bytes)?;
-            console.message(&format!("wrote {}\n", target.path.display()));
-        }
+            figure.write(&Drawing::Comparison(Box::new(plot)), console)
+        });
+        let outcome = match written {
+            Ok(()) => self.outcome(&found),
+            // The comparison is told even so.
+            Err(trouble) => {
+                console.trouble(&trouble);
+                trouble.outcome()
+            }
+        };
         if self.json {
             console.json(&json::comparison(&found), Layout::Indented)?;
         } else {
             console.result(&comparison::comparison_in(&found, self.shown.system()))?;
         }
-        let cautioned = found
-            .joints
-            .iter()
-            .any(|joint| joint.estimate.has_cautions());
-        Ok(if self.strict && cautioned {
+        Ok(outcome)
+    }
+
+    fn outcome(&self, found: &Comparison) -> Outcome {
+        let mut joints = found.joints.iter();
+        if self.strict && joints.any(|joint| joint.estimate.has_cautions()) {
             Outcome::Cautioned
         } else {
             Outcome::Done
-        })
+        }
     }
 
     fn compared(
@@ -124,6 +129,12 @@ impl Compare {
         entries: &[Entry],
         (choice, drawn): (Choice, bool),
     ) -> Result<(Comparison, Vec<FieldMap>), Trouble> {
+        if entries.len() < 2 {
+            return Err(Trouble::usage(
+                "there is only one joint, and a comparison needs two",
+                "name several files, or add `[[variant]]` tables with a name and what differs",
+            ));
+        }
         let losses = if self.no_loss {
             Losses::Left
         } else {

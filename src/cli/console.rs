@@ -5,6 +5,7 @@ use clap::ValueEnum;
 use std::{
     ffi::OsString,
     io::{self, Write},
+    path::Path,
 };
 
 /// When to use colour.
@@ -143,6 +144,19 @@ impl Trouble {
         }
     }
 
+    /// Whether nobody reads the results any more.
+    pub fn is_closed_pipe(&self) -> bool {
+        matches!(self, Self::Output(fault) if fault.kind() == io::ErrorKind::BrokenPipe)
+    }
+
+    /// What happened in a sentence, where it was not told in full before.
+    pub fn sentence(&self) -> Option<&str> {
+        match self {
+            Self::Failure(message) | Self::Usage { message, .. } => Some(message),
+            Self::Output(_) | Self::Faults(_) => None,
+        }
+    }
+
     /// How the run ends because of it.
     pub fn outcome(&self) -> Outcome {
         match self {
@@ -245,6 +259,11 @@ impl Console {
             }
             To::Kept(texts) => texts.push((Stream::Message, text.to_owned())),
         }
+    }
+
+    /// Tells that a file was written.
+    pub fn wrote(&mut self, path: &Path) {
+        self.message(&format!("wrote {}\n", path.display()));
     }
 
     /// Tells what went wrong, and the way out.

@@ -9,7 +9,7 @@ use crate::{
         drawings,
         field::Field,
         input,
-        output::{Existing, Target},
+        output::Permit,
         results,
         shown::Shown,
     },
@@ -99,10 +99,8 @@ impl Draw {
         self.batch.run(&files, console, &|index, path, console| {
             let (source, joint) =
                 check::read(path, &self.sets, console).map_err(|refused| refused.trouble())?;
-            let drawn = self.drawn(&joint, &folders[index]);
-            for path in drawn.map_err(|trouble| trouble.of_file(&source.name))? {
-                console.message(&format!("wrote {}\n", path.display()));
-            }
+            self.drawn(&joint, &folders[index], console)
+                .map_err(|trouble| trouble.of_file(&source.name))?;
             Ok(Outcome::Done)
         })
     }
@@ -115,14 +113,14 @@ impl Draw {
         }
         for name in drawings::NAMES {
             for format in self.format.each() {
-                Target::new(&path(folder, (name, *format)), self.existing())?;
+                self.permit().target(&path(folder, (name, *format)))?;
             }
         }
         Ok(())
     }
 
-    /// Draws the figures of one joint into its folder; which files were written.
-    fn drawn(&self, joint: &Joint, folder: &Path) -> Result<Vec<PathBuf>, Trouble> {
+    /// Draws the figures of one joint into its folder, and tells each as it is written.
+    fn drawn(&self, joint: &Joint, folder: &Path, console: &mut Console) -> Result<(), Trouble> {
         let task = Task {
             joint,
             choice: self.field.choice()?,
@@ -132,7 +130,7 @@ impl Draw {
         if self.maps && folder.exists() {
             // A table that is to be kept is found before anything is solved.
             for name in chain::map_names(joint) {
-                Target::new(&folder.join(name), self.existing())?;
+                self.permit().target(&folder.join(name))?;
             }
         }
         let fields = chain::fields(&task, interface, COLUMNS)?;
@@ -149,16 +147,15 @@ impl Draw {
             }
         }
         results::make(folder)?;
-        let mut written = Vec::new();
         for (path, bytes) in files {
-            Target::new(&path, self.existing())?.write(&bytes)?;
-            written.push(path);
+            self.permit().target(&path)?.write(&bytes)?;
+            console.wrote(&path);
         }
-        Ok(written)
+        Ok(())
     }
 
-    fn existing(&self) -> Existing {
-        Existing::from_force(self.force)
+    fn permit(&self) -> Permit<'_> {
+        Permit::new(self.force, &self.files)
     }
 }
 

@@ -2,14 +2,15 @@
 
 use crate::{
     cli::{
-        answers::{self, Answer, Answers, Form},
+        answers::{Answer, Answers, Form, Found},
         batch::Batch,
         chain::{self, Task},
         check,
         console::{Console, Outcome, Trouble},
         draws,
         field::Field,
-        output::Existing,
+        figure::Figure,
+        output::Permit,
         shown::Shown,
     },
     estimate::Options,
@@ -119,27 +120,24 @@ impl Of {
 impl Drivers {
     /// Ranks the inputs of every file; checks every target before computing.
     pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
-        let existing = Existing::from_force(self.force);
-        let figure = answers::figure(self.draw.as_deref(), &self.files, existing)?;
+        let units = self.shown.system();
+        let permit = Permit::new(self.force, &self.files);
+        let figure = Figure::asked(self.draw.as_deref(), self.files.len(), (permit, units))?;
         let form = Form {
             json: self.json,
             table: &csv::DRIVERS,
-            out: self.out.as_deref().map(|folder| (folder, existing)),
+            out: self.out.as_deref().map(|folder| (folder, permit)),
         };
         Answers::new(&self.batch, &self.files, &form)?.run(
             console,
             &|path, console| check::read(path, &self.sets, console),
             &|(_, joint), console| {
                 let found = self.found(joint)?;
-                if let Some((format, target)) = &figure {
-                    let drawing = Drawing::Tornado(Box::new(found.clone()));
-                    target.write(&chain::render(&drawing, *format, self.shown.system())?)?;
-                    console.message(&format!("wrote {}\n", target.path.display()));
-                }
-                Ok(Box::new(Told {
-                    found,
-                    units: self.shown.system(),
-                }))
+                let written = figure.as_ref().map_or(Ok(()), |figure| {
+                    figure.write(&Drawing::Tornado(Box::new(found.clone())), console)
+                });
+                let answer = Box::new(Told { found, units });
+                Ok(Found { answer, written })
             },
         )
     }

@@ -2,14 +2,14 @@
 
 use crate::{
     cli::{
-        answers::{Answer, Answers, Form},
+        answers::{Answer, Answers, Form, Found},
         batch::Batch,
         chain::{self, Beside, Estimated, Rings, Task},
         check,
         console::{Console, Outcome, Trouble},
         draws::Draws,
         field::Field,
-        output::{Existing, Target},
+        output::{Permit, Target},
         shown::Shown,
     },
     joint::Joint,
@@ -48,10 +48,10 @@ pub struct Estimate {
     #[arg(long = "set", value_name = "KEY=VALUE")]
     sets: Vec<String>,
     /// Shorter: count the assumptions, name the lesser cautions by code
-    #[arg(long)]
+    #[arg(long, conflicts_with = "json")]
     brief: bool,
     /// Longer: every caution in full, every assumption with its reason
-    #[arg(long, conflicts_with = "brief")]
+    #[arg(long, conflicts_with_all = ["brief", "json"])]
     full: bool,
     /// Add the rings around every bolt
     #[arg(long)]
@@ -102,35 +102,37 @@ impl Estimate {
                 "name each medium once",
             ));
         }
-        let existing = Existing::from_force(self.force);
+        let permit = Permit::new(self.force, &self.files);
         let form = Form {
             json: self.json,
             table: &csv::ESTIMATES,
-            out: self.out.as_deref().map(|folder| (folder, existing)),
+            out: self.out.as_deref().map(|folder| (folder, permit)),
         };
-        let nodes = self.nodes_target(existing)?;
+        let nodes = self.nodes_target(permit)?;
         let variant = self.variant.as_deref();
         Answers::new(&self.batch, &self.files, &form)?.run(
             console,
             &|path, console| check::read_variant(path, (&self.sets, variant), console),
             &|(_, joint), console| {
                 let found = self.found(joint)?;
-                if let Some(target) = &nodes {
+                let written = nodes.as_ref().map_or(Ok(()), |target| {
                     let table = csv::nodes(&found.estimate).map_err(Trouble::Failure)?;
                     target.write(table.as_bytes())?;
-                    console.message(&format!("wrote {}\n", target.path.display()));
-                }
-                Ok(Box::new(Told {
+                    console.wrote(&target.path);
+                    Ok(())
+                });
+                let answer = Box::new(Told {
                     asked: &self,
                     found,
                     joint: joint.clone(),
-                }))
+                });
+                Ok(Found { answer, written })
             },
         )
     }
 
     /// The table of nodes, of one joint.
-    fn nodes_target(&self, existing: Existing) -> Result<Option<Target>, Trouble> {
+    fn nodes_target(&self, permit: Permit) -> Result<Option<Target>, Trouble> {
         let Some(path) = &self.nodes else {
             return Ok(None);
         };
@@ -143,7 +145,7 @@ impl Estimate {
                 "write them one by one, or leave --nodes out",
             ));
         }
-        Ok(Some(Target::new(path, existing)?))
+        Ok(Some(permit.target(path)?))
     }
 
     /// The estimate of a joint and what was asked for beside it.

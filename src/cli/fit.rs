@@ -2,13 +2,13 @@
 
 use crate::{
     cli::{
-        answers,
         batch::Batch,
-        chain, check,
+        check,
         console::{Console, Layout, Outcome, Trouble},
         field::{self, Field},
+        figure::Figure,
         input::{self, Source},
-        output::{Existing, Target},
+        output::{Permit, Target},
         results,
         shown::Shown,
     },
@@ -16,7 +16,7 @@ use crate::{
         self, Caution, Colour, Fault,
         registry::{Gravity, gravity},
     },
-    figures::{Drawing, FitPlot, Format, ProfilePlot},
+    figures::{Drawing, FitPlot, ProfilePlot},
     fit::{
         Direction, Readings, Series,
         block::block,
@@ -49,7 +49,7 @@ Examples:
 /// Without --unknown a power law is laid through the readings and printed as a `[measured]` block.
 /// With it the joint's model is held against readings of its conductance.
 #[derive(Debug, Args)]
-#[command(after_help = EXAMPLES)]
+#[command(after_help = EXAMPLES, mut_group("Field", |group| group.requires("unknown")))]
 pub struct Fit {
     /// Tables of readings, each fitted alone; after a joint file where --unknown asks for one; - reads
     /// standard input
@@ -109,15 +109,16 @@ pub struct Fit {
     )]
     planes: Option<Planes>,
     /// Thermal case of the joint in which was measured, counted from 1 in file order
-    #[arg(long, value_name = "N", default_value_t = 1, value_parser = clap::value_parser!(u32).range(1..=2))]
+    #[arg(long, value_name = "N", default_value_t = 1, requires = "unknown",
+          value_parser = clap::value_parser!(u32).range(1..=2))]
     case: u32,
     #[command(flatten)]
     field: Field,
     /// Joints drawn for what other inputs leave open; 0 takes these as nominal
-    #[arg(long, value_name = "N", default_value_t = 256, value_parser = draws)]
+    #[arg(long, value_name = "N", default_value_t = 256, requires = "unknown", value_parser = draws)]
     draws: u32,
     /// Seed of the draws
-    #[arg(long, value_name = "N", default_value_t = 1)]
+    #[arg(long, value_name = "N", default_value_t = 1, requires = "unknown")]
     seed: u64,
     #[command(flatten)]
     shown: Shown,
@@ -194,65 +195,101 @@ impl Fit {
             return Ok(Outcome::Done);
         }
         input::stdin_at_most_once(&self.files)?;
-        let tables = self.batch.files(self.tables()?);
-        let existing = Existing::from_force(self.force);
-        let figure = answers::figure(self.draw.as_deref(), &tables, existing)?;
-        if tables.len() > 1 && !self.without.is_empty() {
+        // What is written where depends on the tables that are named, not on the part of this run.
+        let named = self.tables()?;
+        let several = named.len() > 1;
+        let tables = self.batch.files(named);
+        let permit = Permit::new(self.force, &self.files);
+        let figure = Figure::asked(
+            self.draw.as_deref(),
+            named.len(),
+            (permit, self.shown.system()),
+        )?;
+        if several && !self.without.is_empty() {
             return Err(Trouble::usage(
                 format!(
                     "--without counts the lines of one table, and {} are named",
-                    tables.len()
+                    named.len()
                 ),
                 "fit the table with a line to leave out alone",
             ));
         }
-        let blocks = self.blocks(&tables, existing)?;
+        let blocks = self.blocks(named, &tables, permit)?;
         self.batch.run(&tables, console, &|index, path, console| {
-            if tables.len() > 1 && !self.json {
+            if several && !self.json {
                 let gap = if index > 0 { "\n" } else { "" };
-                console.result(&format!("{gap}{}:\n", input::name(path)))?;
+                let headed = console.result(&format!("{gap}{}:\n", input::name(path)));
+                // A block is owed also where nobody reads.
+                if blocks.is_empty() {
+                    headed?;
+                }
             }
-            match &self.unknown {
+            let done = match &self.unknown {
                 None => self.law(path, (blocks.get(index), figure.as_ref()), console),
                 Some(asked) => {
                     let files = [self.files[0].as_path(), path];
                     self.unknown(asked, files, figure.as_ref(), console)
                 }
+            };
+            if let (true, Some(why)) = (self.json, done.as_ref().err().and_then(Trouble::sentence))
+            {
+                let object = listing::unanswered(&input::name(path), why);
+                console.json(&object, self.layout())?;
             }
+            done
         })
     }
 
     /// The tables among the files; where an unknown is asked for, a joint comes before them.
     fn tables(&self) -> Result<&[PathBuf], Trouble> {
         match (&self.unknown, self.files.as_slice()) {
+            (Some(_), [joint, tables @ ..])
+                if !is_joint(joint) && tables.iter().any(|table| is_joint(table)) =>
+            {
+                Err(Trouble::usage(
+                    format!(
+                        "`{}` stands where the joint file belongs",
+                        input::name(joint)
+                    ),
+                    "name the joint file first, and the table of readings after it",
+                ))
+            }
             (Some(_), [_joint, tables @ ..]) if !tables.is_empty() => Ok(tables),
             (Some(_), _) => Err(Trouble::usage(
                 "an unknown takes a joint file and a table of what it conducted",
                 "name the joint file before the table: `ringsum fit joint.toml points.csv --unknown roughness`",
             )),
-            (None, [first, _, ..]) if first.extension().is_some_and(|ending| ending == "toml") => {
-                Err(Trouble::usage(
-                    "a joint file is named, but no unknown of it",
+            (None, tables) => match tables.iter().find(|table| is_joint(table)) {
+                Some(joint) => Err(Trouble::usage(
                     format!(
-                        "say what is unknown, `--unknown roughness`; one of {}",
+                        "`{}` is a joint file, and no unknown of it is asked for",
+                        input::name(joint)
+                    ),
+                    format!(
+                        "name the joint, a table of readings and what is unknown: --unknown with one of {}",
                         listed()
                     ),
-                ))
-            }
-            (None, tables) => Ok(tables),
+                )),
+                None => Ok(tables),
+            },
         }
     }
 
     /// Where the blocks are written: into a file, or of several tables into a folder.
-    fn blocks(&self, tables: &[PathBuf], existing: Existing) -> Result<Vec<Target>, Trouble> {
-        match (&self.out, tables) {
+    fn blocks(
+        &self,
+        named: &[PathBuf],
+        tables: &[PathBuf],
+        permit: Permit,
+    ) -> Result<Vec<Target>, Trouble> {
+        match (&self.out, named) {
             (None, _) => Ok(Vec::new()),
-            (Some(file), [_]) => Ok(vec![Target::new(file, existing)?]),
+            (Some(file), [_]) => tables.iter().map(|_| permit.target(file)).collect(),
             (Some(folder), _) => {
-                results::apart(tables, ".toml")?;
+                results::apart(named, ".toml")?;
                 results::make(folder)?;
                 let name = |path: &PathBuf| format!("{}.toml", results::stem(path));
-                let target = |path| Target::new(&folder.join(name(path)), existing);
+                let target = |path| permit.target(&folder.join(name(path)));
                 tables.iter().map(target).collect()
             }
         }
@@ -265,10 +302,10 @@ impl Fit {
     fn law(
         &self,
         points: &Path,
-        (out, figure): (Option<&Target>, Option<&(Format, Target)>),
+        (out, figure): (Option<&Target>, Option<&Figure>),
         console: &mut Console,
     ) -> Result<Outcome, Trouble> {
-        let (source, readings) = self.readings(points, console)?;
+        let (source, readings) = self.readings(points, self.json, console)?;
         let form = match self.form {
             None | Some(Shape::Law) => Form::Law,
             Some(Shape::Table) => Form::Table,
@@ -286,52 +323,61 @@ impl Fit {
             ));
         };
         let block = block(&series, branch, self.bolts);
-        if let Some((format, target)) = figure {
+        let drawn = figure.map_or(Ok(()), |figure| {
             let plot = FitPlot {
                 title: stem(&source.name),
                 series: series.clone(),
             };
-            let drawing = Drawing::Fit(Box::new(plot));
-            draw((&drawing, *format, self.shown), target, console)?;
-        }
-        if self.json {
+            figure.write(&Drawing::Fit(Box::new(plot)), console)
+        });
+        let kept = out.map_or(Ok(()), |target| {
+            target.write(block.as_bytes())?;
+            console.wrote(&target.path);
+            Ok(())
+        });
+        let outcome = self.outcome(&series.cautions, drawn.and(kept), console);
+        let told = if self.json {
             console.json(
                 &fit::series_json(&series, (&source.name, &block)),
                 self.layout(),
-            )?;
+            )
         } else {
-            console.result(&text::painted(&fit::series_in(
-                &series,
-                &source.name,
-                self.shown.system(),
-            )))?;
+            let mut text =
+                text::painted(&fit::series_in(&series, &source.name, self.shown.system()));
+            if out.is_none() {
+                let _ = write!(text, "\n{block}");
+            }
+            console.result(&text)
+        };
+        match told.map_err(Trouble::from) {
+            // The block was asked for, and the next ones are.
+            Err(trouble) if out.is_some() && trouble.is_closed_pipe() => Ok(outcome),
+            told => told.map(|()| outcome),
         }
-        if let Some(target) = out {
-            target.write(block.as_bytes())?;
-            console.message(&format!("wrote {}\n", target.path.display()));
-        } else if !self.json {
-            console.result(&format!("\n{block}"))?;
-        }
-        Ok(self.outcome(&series.cautions))
     }
 
     fn unknown(
         &self,
         asked: &str,
         [joint, points]: [&Path; 2],
-        figure: Option<&(Format, Target)>,
+        figure: Option<&Figure>,
         console: &mut Console,
     ) -> Result<Outcome, Trouble> {
         let choice = self.field.choice()?;
         // Both files are read before anything is solved, so that all their faults are told.
         let read = check::read(joint, &self.sets, console);
-        let points = self.readings(points, console);
-        let (file, _) = match (read, points.is_err()) {
-            (Ok(read), _) => read,
-            (Err(refused), false) => return Err(refused.trouble()),
-            (Err(refused), true) => {
-                console.trouble(&refused.trouble());
-                return Err(points.err().unwrap_or_else(|| refused.trouble()));
+        // One object for a table: the faults of the joint come first.
+        let points = self.readings(points, self.json && read.is_ok(), console);
+        let (file, _) = match read {
+            Ok(read) => read,
+            Err(refused) => {
+                if self.json {
+                    console.json(&refused.json(), self.layout())?;
+                }
+                if let Err(unread) = points {
+                    console.trouble(&unread);
+                }
+                return Err(refused.trouble());
             }
         };
         let (source, readings) = points?;
@@ -363,19 +409,16 @@ impl Fit {
         let answer = unknown::fit(&bench, &question, &readings);
         bench.watch.tell("");
         let answer = answer?;
-        if let Some((format, target)) = figure {
+        let drawn = figure.map_or(Ok(()), |figure| {
             let plot = ProfilePlot {
                 asked: question.clone(),
                 answer: answer.clone(),
             };
-            draw(
-                (&Drawing::Profile(Box::new(plot)), *format, self.shown),
-                target,
-                console,
-            )?;
-        }
+            figure.write(&Drawing::Profile(Box::new(plot)), console)
+        });
+        let outcome = self.outcome(&answer.cautions, drawn, console);
         self.tell((&question, &answer), &source, console)?;
-        Ok(self.outcome(&answer.cautions))
+        Ok(outcome)
     }
 
     fn tell(
@@ -390,18 +433,24 @@ impl Fit {
                 self.layout(),
             )?;
         } else {
-            console.result(&text::painted(&fit::answer(question, answer, &source.name)))?;
+            let shown = (source.name.as_str(), self.shown.system());
+            console.result(&text::painted(&fit::answer_in(question, answer, shown)))?;
         }
         Ok(())
     }
 
-    /// The readings of a table, those left out told.
-    fn readings(&self, path: &Path, console: &mut Console) -> Result<(Source, Readings), Trouble> {
+    /// The readings of a table, those left out told; its faults also `as_json`.
+    fn readings(
+        &self,
+        path: &Path,
+        as_json: bool,
+        console: &mut Console,
+    ) -> Result<(Source, Readings), Trouble> {
         let source = input::points(path)?;
         let all = match Readings::read(&source.text) {
             Ok(all) => all,
             Err(faults) => {
-                if self.json {
+                if as_json {
                     console.json(&refused_json(&source, &faults), self.layout())?;
                 }
                 return Err(refused(&source, &faults));
@@ -431,7 +480,17 @@ impl Fit {
         Ok((source, kept))
     }
 
-    fn outcome(&self, cautions: &[Caution]) -> Outcome {
+    /// How a fit ends, which is told even where a file of it could not be written.
+    fn outcome(
+        &self,
+        cautions: &[Caution],
+        written: Result<(), Trouble>,
+        console: &mut Console,
+    ) -> Outcome {
+        if let Err(trouble) = written {
+            console.trouble(&trouble);
+            return trouble.outcome();
+        }
         let speaks = |caution: &Caution| gravity(caution.code) != Gravity::Standing;
         if self.strict && cautions.iter().any(speaks) {
             Outcome::Cautioned
@@ -474,14 +533,9 @@ fn refused_json(source: &Source, faults: &[Fault]) -> serde_json::Value {
     listing::faults(&source.name, &faults)
 }
 
-fn draw(
-    (drawing, format, shown): (&Drawing, Format, Shown),
-    target: &Target,
-    console: &mut Console,
-) -> Result<(), Trouble> {
-    target.write(&chain::render(drawing, format, shown.system())?)?;
-    console.message(&format!("wrote {}\n", target.path.display()));
-    Ok(())
+/// Whether a path is that of a joint file by its ending.
+fn is_joint(path: &Path) -> bool {
+    path.extension().is_some_and(|ending| ending == "toml")
 }
 
 fn stem(name: &str) -> String {

@@ -6,7 +6,7 @@ use crate::{
         console::{Console, Outcome, Trouble},
         demos::{DEMOS, Demo},
         input,
-        output::{Existing, Target},
+        output::Permit,
     },
     report::{
         number::cut,
@@ -55,12 +55,12 @@ impl New {
             console.result(text)?;
             return Ok(Outcome::Done);
         };
-        let existing = Existing::from_force(self.force);
+        let permit = Permit::new(self.force, &[]);
         let folder = path.parent().map_or_else(PathBuf::new, Path::to_owned);
         // Every target is checked before the first is written.
-        let mut files = vec![(Target::new(&path, existing)?, text)];
+        let mut files = vec![(permit.target(&path)?, text)];
         for (name, table) in beside {
-            files.push((Target::new(&folder.join(name), existing)?, table));
+            files.push((permit.target(&folder.join(name))?, table));
         }
         if let Some((target, _)) = files[1..].iter().find(|(target, _)| target.path == path) {
             return Err(Trouble::usage(

@@ -19,10 +19,42 @@ pub enum Existing {
     Replace,
 }
 
-impl Existing {
-    /// From `--force`.
-    pub fn from_force(force: bool) -> Self {
-        if force { Self::Replace } else { Self::Keep }
+/// Which files a command may write: none that exists unless told to, and never one that it reads.
+#[derive(Clone, Copy, Debug)]
+pub struct Permit<'a> {
+    existing: Existing,
+    inputs: &'a [PathBuf],
+}
+
+impl<'a> Permit<'a> {
+    /// From `--force` and the files that are read.
+    pub fn new(force: bool, inputs: &'a [PathBuf]) -> Self {
+        Self {
+            existing: if force {
+                Existing::Replace
+            } else {
+                Existing::Keep
+            },
+            inputs,
+        }
+    }
+
+    /// A file that may be written, checked before anything is computed.
+    pub fn target(self, path: &Path) -> Result<Target, Trouble> {
+        let real = |path: &Path| fs::canonicalize(path).ok();
+        let written = real(path);
+        let read = |input: &&PathBuf| written.is_some() && real(input) == written;
+        if let Some(input) = self.inputs.iter().find(read) {
+            return Err(Trouble::usage(
+                format!(
+                    "`{}` would be written over `{}`, which is read",
+                    path.display(),
+                    input.display()
+                ),
+                "name another file; what is read is never replaced, not with --force either",
+            ));
+        }
+        Target::new(path, self.existing)
     }
 }
 
@@ -99,8 +131,9 @@ impl Target {
     pub fn write(&self, bytes: &[u8]) -> Result<(), Trouble> {
         self.replace(bytes).map_err(|found| {
             Trouble::Failure(format!(
-                "`{}` cannot be written: {found}",
-                self.path.display()
+                "`{}` cannot be written: {}",
+                self.path.display(),
+                bare(&found)
             ))
         })
     }
@@ -123,6 +156,15 @@ impl Target {
             }
         };
         Ok(())
+    }
+}
+
+/// A fault without the path of the temporary file behind it, for which nobody asked.
+fn bare(found: &io::Error) -> String {
+    let told = found.to_string();
+    match told.split_once(" at path ") {
+        Some((fault, _)) => fault.to_owned(),
+        None => told,
     }
 }
 
@@ -189,6 +231,21 @@ mod tests {
         assert!(target.write(b"mine").is_err());
         assert_eq!(fs::read(&path).unwrap(), b"another");
         assert_eq!(names(folder.path()), ["figure.svg"]);
+    }
+
+    #[test]
+    fn what_is_read_is_never_replaced() {
+        let folder = tempfile::tempdir().unwrap();
+        let path = folder.path().join("joint.toml");
+        fs::write(&path, "read").unwrap();
+        let inputs = [PathBuf::from("-"), path.clone()];
+        let same = folder.path().join(".").join("joint.toml");
+        for force in [false, true] {
+            let told = format!("{:?}", Permit::new(force, &inputs).target(&same));
+            assert!(told.contains("which is read"), "{told}");
+        }
+        let other = folder.path().join("other.toml");
+        assert!(Permit::new(false, &inputs).target(&other).is_ok());
     }
 
     #[cfg(unix)]

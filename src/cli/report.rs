@@ -11,7 +11,7 @@ use crate::{
         draws::Draws,
         field::Field,
         input::{self, Source},
-        output::{Existing, Target},
+        output::{Permit, Target},
         results::{self, stem},
         shown::Shown,
     },
@@ -92,7 +92,7 @@ impl Report {
 
     /// Where each page goes: the page itself, or a folder with one for each file.
     fn targets(&self, files: &[PathBuf]) -> Result<Vec<Target>, Trouble> {
-        let existing = Existing::from_force(self.force);
+        let permit = Permit::new(self.force, &self.files);
         let ending = self.out.extension().and_then(|ending| ending.to_str());
         let is_page = ending.is_some_and(|ending| {
             ending.eq_ignore_ascii_case("html") || ending.eq_ignore_ascii_case("htm")
@@ -107,15 +107,12 @@ impl Report {
                     "name a folder: --out pages",
                 ));
             }
-            return Ok(vec![Target::new(&self.out, existing)?]);
+            return Ok(vec![permit.target(&self.out)?]);
         }
         results::apart(files, ".html")?;
-        if self.out.is_file() {
+        if self.out.is_file() || (!self.out.is_dir() && results::ends_like_a_file(&self.out)) {
             return Err(Trouble::usage(
-                format!(
-                    "`{}` is a file that does not end in .html",
-                    self.out.display()
-                ),
+                format!("`{}` does not end in .html", self.out.display()),
                 "name a page, `joint.html`, or a folder",
             ));
         }
@@ -123,7 +120,7 @@ impl Report {
         let page = |path: &PathBuf| self.out.join(format!("{}.html", stem(path)));
         files
             .iter()
-            .map(|path| Target::new(&page(path), existing))
+            .map(|path| permit.target(&page(path)))
             .collect()
     }
 
@@ -150,7 +147,8 @@ impl Report {
         let entries: Vec<Entry> = versions_of(None, versions.clone()).collect();
         let found = chain::handed(&task, &entries, &asked)
             .map_err(|trouble| trouble.of_file(&source.name))?;
-        let figures = figures(joint, (&entries, &found), self.shown.system())?;
+        let (figures, undrawn) = figures(joint, (&entries, &found), self.shown.system())?;
+        let left_out = [found.left_out.as_slice(), &undrawn].concat();
         let stated = joint::stated(&source.text, (&self.sets, place));
         let page = page::page(&Contents {
             joint,
@@ -173,11 +171,11 @@ impl Report {
             ranking: found.ranking.as_ref(),
             comparison: found.comparison.as_ref().map(|(comparison, _)| comparison),
             units: self.shown.system(),
-            left_out: &found.left_out,
+            left_out: &left_out,
         })
         .map_err(|why| Trouble::Failure(format!("{}: the page failed: {why}", source.name)))?;
         target.write(page.as_bytes())?;
-        console.message(&format!("wrote {}\n", target.path.display()));
+        console.wrote(&target.path);
         Ok(if self.strict && found.fields.nominal.has_cautions() {
             Outcome::Cautioned
         } else {
@@ -276,12 +274,12 @@ fn digest(text: &str) -> String {
         })
 }
 
-/// Every drawing of a page.
+/// Every drawing of a page, and which could not be drawn.
 fn figures(
     joint: &Joint,
     (entries, found): (&[Entry], &Handed),
     units: System,
-) -> Result<Figures, Trouble> {
+) -> Result<(Figures, Vec<String>), Trouble> {
     let drawn = |drawing: &Drawing, caption: &str, plan: bool| -> Result<Figure, Trouble> {
         let [svg, narrow] = chain::both_widths(drawing, units)?;
         Ok(Figure {
@@ -292,6 +290,7 @@ fn figures(
         })
     };
     let plain = |drawing: &Drawing, caption: &str| drawn(drawing, caption, false).map(Some);
+    let mut undrawn = Vec::new();
     let mut all = Figures {
         joint: plain(
             &Drawing::Joint(Box::new(drawings::plan_and_cut(joint))),
@@ -324,12 +323,18 @@ fn figures(
         )?;
     }
     if let Some((comparison, maps)) = &found.comparison {
-        all.comparison = plain(
+        let drawn = plain(
             &Drawing::Comparison(Box::new(plot(entries, (comparison, maps)))),
             "Source to sink and contact pressure of every version.",
-        )?;
+        );
+        match drawn {
+            Ok(figure) => all.comparison = figure,
+            // Too many to draw; the table tells them all.
+            Err(Trouble::Failure(why)) => undrawn.push(format!("Figure of the variants: {why}.")),
+            Err(trouble) => return Err(trouble),
+        }
     }
-    Ok(all)
+    Ok((all, undrawn))
 }
 
 #[cfg(test)]

@@ -5,9 +5,9 @@ use crate::{
         batch::Shard,
         console::Trouble,
         input,
-        output::{self, Existing, Target},
+        output::{Permit, Target},
     },
-    report::csv::Table,
+    report::csv::{Ended, Table},
 };
 use std::{
     collections::BTreeMap,
@@ -22,7 +22,14 @@ pub struct Results {
     targets: Vec<Target>,
     columns: &'static Table,
     table: Target,
-    rows: Mutex<BTreeMap<usize, String>>,
+    rows: Mutex<BTreeMap<usize, Row>>,
+}
+
+/// The lines of one file in the table, and whether its JSON was written.
+#[derive(Debug)]
+struct Row {
+    lines: String,
+    written: bool,
 }
 
 impl Results {
@@ -30,7 +37,7 @@ impl Results {
     pub fn new(
         (folder, columns): (&Path, &'static Table),
         files: &[PathBuf],
-        (existing, part): (Existing, Option<Shard>),
+        (permit, part): (Permit, Option<Shard>),
     ) -> Result<Self, Trouble> {
         apart(files, ".json")?;
         make(folder)?;
@@ -42,38 +49,48 @@ impl Results {
         Ok(Self {
             targets: files
                 .iter()
-                .map(|path| Target::new(&folder.join(format!("{}.json", stem(path))), existing))
+                .map(|path| permit.target(&folder.join(format!("{}.json", stem(path)))))
                 .collect::<Result<Vec<Target>, Trouble>>()?,
             columns,
-            table: Target::new(&folder.join(table), existing)?,
+            table: permit.target(&folder.join(table))?,
             rows: Mutex::new(BTreeMap::new()),
         })
     }
 
-    /// Writes the result of one file, and keeps its rows of the table.
+    /// Writes the result of one file, and keeps its lines of the table; where the result cannot be
+    /// written, the table tells that instead.
     pub fn put(
         &self,
-        index: usize,
+        (index, file): (usize, &str),
         object: &serde_json::Value,
-        rows: String,
+        lines: String,
     ) -> Result<(), Trouble> {
+        let written = self.targets[index].write(format!("{object:#}\n").as_bytes());
+        let lines = match &written {
+            Err(Trouble::Failure(why)) => self.columns.without(file, Ended::Failed, why),
+            _ => lines,
+        };
+        let row = Row {
+            lines,
+            written: written.is_ok(),
+        };
         self.rows
             .lock()
             .unwrap_or_else(PoisonError::into_inner)
-            .insert(index, rows);
-        self.targets[index].write(format!("{object:#}\n").as_bytes())
+            .insert(index, row);
+        written
     }
 
     /// Writes the table, in the order of the files; tells what was written.
     pub fn finish(&self) -> Result<String, Trouble> {
         let rows = self.rows.lock().unwrap_or_else(PoisonError::into_inner);
         let mut text = self.columns.header();
-        text.extend(rows.values().map(String::as_str));
+        text.extend(rows.values().map(|row| row.lines.as_str()));
         self.table.write(text.as_bytes())?;
         Ok(format!(
             "wrote {} and {} JSON beside it\n",
             self.table.path.display(),
-            rows.len()
+            rows.values().filter(|row| row.written).count()
         ))
     }
 }
@@ -98,22 +115,37 @@ pub fn apart(files: &[PathBuf], ending: &str) -> Result<(), Trouble> {
     Ok(())
 }
 
-/// Refuses a folder that is a file, or whose name is that of a figure.
+/// Endings of what may be handed over: a new folder that ends so is a slip.
+const FILES: [&str; 9] = [
+    "svg", "png", "pdf", "html", "htm", "json", "csv", "toml", "txt",
+];
+
+/// Whether a path ends like a file.
+pub fn ends_like_a_file(path: &Path) -> bool {
+    let ending = path.extension().and_then(|ending| ending.to_str());
+    ending.is_some_and(|ending| FILES.iter().any(|file| ending.eq_ignore_ascii_case(file)))
+}
+
+/// Refuses a folder that is a file, lies in one, or is not there and ends like a file.
 pub fn folder(folder: &Path) -> Result<(), Trouble> {
     let shown = folder.display();
     if folder.is_dir() {
         return Ok(());
     }
-    if folder.exists() {
+    if let Some(file) = folder.ancestors().find(|part| part.is_file()) {
         return Err(Trouble::usage(
-            format!("`{shown}` is a file, where a folder is asked for"),
+            if file == folder {
+                format!("`{shown}` is a file, where a folder is asked for")
+            } else {
+                format!("`{}` is a file, and no folder lies in it", file.display())
+            },
             "name a folder; it is made where there is none",
         ));
     }
-    if output::format(folder).is_ok() {
+    if ends_like_a_file(folder) {
         return Err(Trouble::usage(
-            format!("`{shown}` is the name of a figure, where a folder is asked for"),
-            "name a folder; its files are named by what they show",
+            format!("`{shown}` is the name of a file, where a folder is asked for"),
+            "name a folder; its files are named by what they hold",
         ));
     }
     Ok(())

@@ -2,15 +2,16 @@
 
 use crate::{
     cli::{
-        answers::{self, Answer, Answers, Form},
+        answers::{Answer, Answers, Form, Found},
         batch::Batch,
         chain::{self, Task},
         check,
         console::{Console, Outcome, Trouble},
         draws::Draws,
         field::Field,
+        figure::Figure,
         input::{self, Source},
-        output::{self, Existing},
+        output::{self, Permit},
         shown::Shown,
     },
     estimate::TorqueSweep,
@@ -83,8 +84,9 @@ impl Torque {
                 "swap the two torques",
             ));
         }
-        let existing = Existing::from_force(self.force);
-        let figure = answers::figure(self.draw.as_deref(), &self.files, existing)?;
+        let units = self.shown.system();
+        let permit = Permit::new(self.force, &self.files);
+        let figure = Figure::asked(self.draw.as_deref(), self.files.len(), (permit, units))?;
         if let Some(folder) = self
             .out
             .as_deref()
@@ -101,22 +103,18 @@ impl Torque {
         let form = Form {
             json: self.json,
             table: &csv::TORQUES,
-            out: self.out.as_deref().map(|folder| (folder, existing)),
+            out: self.out.as_deref().map(|folder| (folder, permit)),
         };
         Answers::new(&self.batch, &self.files, &form)?.run(
             console,
             &|path, console| check::read(path, &self.sets, console),
             &|(source, joint), console| {
                 let found = self.found(joint, source)?;
-                if let Some((format, target)) = &figure {
-                    let drawing = Drawing::Torque(Box::new(found.clone()));
-                    target.write(&chain::render(&drawing, *format, self.shown.system())?)?;
-                    console.message(&format!("wrote {}\n", target.path.display()));
-                }
-                Ok(Box::new(Told {
-                    found,
-                    units: self.shown.system(),
-                }))
+                let written = figure.as_ref().map_or(Ok(()), |figure| {
+                    figure.write(&Drawing::Torque(Box::new(found.clone())), console)
+                });
+                let answer = Box::new(Told { found, units });
+                Ok(Found { answer, written })
             },
         )
     }

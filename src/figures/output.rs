@@ -12,7 +12,7 @@ use plotters::{
 };
 
 use crate::figures::{
-    FigureError,
+    FigureError, LONGEST,
     fonts::{self, FAMILY, HEIGHT_PER_EM, Weight},
     lettering::{Anchor, Lettering, Turn},
     sheet::{Colour, Mark, Sheet},
@@ -31,7 +31,7 @@ const VECTOR_HANG: f64 = 0.76;
 /// The sheet as one `<svg>` element.
 pub(super) fn svg(sheet: &Sheet) -> Result<String, FigureError> {
     fonts::register()?;
-    let [width, height] = fine_size(sheet);
+    let [width, height] = fine_size(sheet)?;
     let mut body = String::new();
     let mut backend = SVGBackend::with_string(&mut body, (width as u32, height as u32));
     for mark in &sheet.marks {
@@ -105,7 +105,7 @@ fn joined(marks: &str) -> String {
 /// The sheet as PNG.
 pub(super) fn png(sheet: &Sheet) -> Result<Vec<u8>, FigureError> {
     fonts::register()?;
-    let [width, height] = fine_size(sheet);
+    let [width, height] = fine_size(sheet)?;
     let mut buffer = vec![0xFF; 3 * width * height];
     for picture in &sheet.pictures {
         picture.paint(&mut buffer, width, FINE as f64);
@@ -272,10 +272,13 @@ fn font(size: f64, weight: Weight) -> FontDesc<'static> {
     FontDesc::new(FontFamily::Name(FAMILY), size, style)
 }
 
-fn fine_size(sheet: &Sheet) -> [usize; 2] {
-    sheet
-        .size
-        .map(|v| v.ceil().clamp(1.0, 4000.0) as usize * FINE)
+/// Size on the backend's grid; nothing that is drawn may lie outside.
+fn fine_size(sheet: &Sheet) -> Result<[usize; 2], FigureError> {
+    let size = sheet.size.map(|v| v.ceil().max(1.0) as usize);
+    match size.into_iter().max() {
+        Some(most) if most > LONGEST => Err(FigureError::TooLong(most)),
+        _ => Ok(size.map(|v| v * FINE)),
+    }
 }
 
 /// A place on the backend's grid; far outside is near enough for what cannot be seen.

@@ -143,7 +143,8 @@ fn emissivity(
             one_for_each(record, ("emissivity", each), plates, collector)?;
             stated = each.iter().copied().map(Some).collect();
         }
-        Some(PerPlate::Named(named)) => {
+        Some(PerPlate::Named { others, named }) => {
+            stated.fill(*others);
             for (name, span, value) in named {
                 match plates.iter().position(|plate| plate.name == *name) {
                     Some(place) => stated[place] = Some(*value),

@@ -70,7 +70,7 @@ pub enum Kind {
     SpreadOrWord(Quantity, &'static [&'static str]),
     /// A spread of numbers, or a name from the catalogue.
     SpreadOr(Catalogue),
-    /// One value for both plates, a list of two, or a table by plate name.
+    /// One value for all plates, a list of one for each, or a table by plate name with `*` for the others.
     PerPlate(Measure),
     /// Two names.
     Names,
@@ -129,6 +129,9 @@ pub enum Catalogue {
     /// Fillers.
     Filler,
 }
+
+/// Name that stands for every plate that is not named.
+pub const OTHERS: &str = "*";
 
 /// Keys of a spread given as a table; the first four hold values.
 pub const SPREAD_KEYS: [&str; 5] = ["low", "nominal", "high", "sigma", "distribution"];

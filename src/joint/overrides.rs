@@ -6,8 +6,8 @@ use crate::{
     diagnostic::{self, Fault},
     joint::{
         collector::{Collector, Wording, fault},
-        fields::{Kind, SPREAD_KEYS, Section, listed},
-        sections::{FILE, default_name, own_name},
+        fields::{Kind, OTHERS, SPREAD_KEYS, Section, listed},
+        sections::{FILE, PLATE, default_name, own_name},
         tree::{Form, Key, Node, Span, short},
     },
 };
@@ -43,7 +43,28 @@ pub(super) fn apply(tree: &mut Node, text: &str, shift: usize, collector: &mut C
 
 /// Sets a field of the file by its path.
 pub(super) fn set(file: &mut Node, path: &[Step], value: Given<'_>) -> Told {
-    set_in(file, &FILE, path, value)
+    let plates = plates(file);
+    let setting = Setting {
+        value,
+        plates: &plates,
+    };
+    set_in(file, &FILE, path, setting)
+}
+
+/// Names of the plates, in order.
+fn plates(file: &Node) -> Vec<String> {
+    let Some(node) = file.child(PLATE.name) else {
+        return Vec::new();
+    };
+    let nodes = match &node.form {
+        Form::List(nodes) => nodes.as_slice(),
+        _ => std::slice::from_ref(node),
+    };
+    let place = |(place, node)| {
+        let name = own_name(node, &PLATE).or_else(|| default_name(&PLATE, (place, nodes.len())));
+        name.unwrap_or_default().to_owned()
+    };
+    nodes.iter().enumerate().map(place).collect()
 }
 
 /// A path that cannot be read.
@@ -133,13 +154,26 @@ impl Given<'_> {
     }
 }
 
+/// A value, and what it may need of the rest of the file.
+#[derive(Clone, Copy, Debug)]
+struct Setting<'t> {
+    value: Given<'t>,
+    plates: &'t [String],
+}
+
 pub(super) type Told = Result<(), Box<Fault>>;
 
 fn bad(step: &Step, message: impl Into<String>) -> Fault {
     fault(CODE, &step.span, message)
 }
 
-fn set_in(node: &mut Node, section: &'static Section, steps: &[Step], value: Given<'_>) -> Told {
+fn set_in(
+    node: &mut Node,
+    section: &'static Section,
+    steps: &[Step],
+    setting: Setting<'_>,
+) -> Told {
+    let Setting { value, plates } = setting;
     let Some((step, rest)) = steps.split_first() else {
         return Ok(());
     };
@@ -199,13 +233,13 @@ fn set_in(node: &mut Node, section: &'static Section, steps: &[Step], value: Giv
                         .help(EXAMPLE),
                 ));
             }
-            set_in(element, inner, rest, value)
+            set_in(element, inner, rest, setting)
         }
         (kind, []) => {
             *slot(node, section, step)? = value.node(kind);
             Ok(())
         }
-        (Kind::Table(inner), rest) => set_in(slot(node, section, step)?, inner, rest, value),
+        (Kind::Table(inner), rest) => set_in(slot(node, section, step)?, inner, rest, setting),
         (Kind::Spread(_) | Kind::SpreadOr(_), [last])
             if SPREAD_KEYS.contains(&last.name.as_str()) =>
         {
@@ -215,9 +249,11 @@ fn set_in(node: &mut Node, section: &'static Section, steps: &[Step], value: Giv
         }
         (Kind::PerPlate(_), [plate]) => {
             let values = slot(node, section, step)?;
-            if !matches!(values.form, Form::Table(_)) {
-                values.form = Form::Table(Vec::new());
-            }
+            open_plates(values, plates).map_err(|expected| {
+                Box::new(
+                    bad(step, format!("`{}` is a list in the file", field.key)).expecting(expected),
+                )
+            })?;
             put(values, plate, value.node(Kind::Number))
         }
         (_, [next, ..]) => Err(Box::new(
@@ -314,6 +350,41 @@ fn open_spread(node: &mut Node) {
         (name, value)
     });
     node.form = Form::Table(entries.collect());
+}
+
+/// Turns what is stated for all plates, or as a list, into a table by their names, so that one of them
+/// can be given another value.
+fn open_plates(values: &mut Node, plates: &[String]) -> Result<(), String> {
+    let names: Vec<String> = match &values.form {
+        Form::Table(_) => return Ok(()),
+        Form::List(nodes) if nodes.is_empty() => Vec::new(),
+        Form::List(nodes) if nodes.len() == plates.len() => plates.to_vec(),
+        Form::List(nodes) => {
+            return Err(format!(
+                "expected a value for each of {} plates, found {}",
+                plates.len(),
+                nodes.len()
+            ));
+        }
+        _ => vec![OTHERS.to_owned()],
+    };
+    let old = std::mem::replace(&mut values.form, Form::Table(Vec::new()));
+    let nodes = match old {
+        Form::List(nodes) => nodes,
+        form => vec![Node {
+            span: values.span.clone(),
+            form,
+        }],
+    };
+    let entries = names.into_iter().zip(nodes).map(|(name, node)| {
+        let key = Key {
+            span: node.span.clone(),
+            name,
+        };
+        (key, node)
+    });
+    values.form = Form::Table(entries.collect());
+    Ok(())
 }
 
 /// Whether this is the file itself, whose lists of tables are no short values.

@@ -83,8 +83,13 @@ pub(super) enum PerPlate {
     Both(f64),
     /// By position.
     Each(Vec<f64>),
-    /// By plate name, with the places of the names.
-    Named(Vec<(String, Span, f64)>),
+    /// By plate name.
+    Named {
+        /// That of the plates that are not named.
+        others: Option<f64>,
+        /// Names with their places.
+        named: Vec<(String, Span, f64)>,
+    },
 }
 
 impl Record {

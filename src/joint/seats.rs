@@ -142,14 +142,10 @@ fn stated_holes(
             Some(StatedHoles(diameters))
         }
         Some(PerPlate::Both(diameter)) => {
-            let mut all = [Some(*diameter); MOST_PLATES];
-            if !matches!(bolt.engagement, Engagement::Nut) {
-                all[plates.len() - 1 - bolt.head_plate] = None;
-            }
-            Some(StatedHoles(all))
+            Some(StatedHoles(common(bolt, plates.len(), Some(*diameter))))
         }
-        Some(PerPlate::Named(named)) => {
-            let mut diameters = [None; MOST_PLATES];
+        Some(PerPlate::Named { others, named }) => {
+            let mut diameters = common(bolt, plates.len(), *others);
             for (name, span, diameter) in named {
                 let place = plates.iter().position(|plate| plate.name == *name);
                 let Some(place) = place else {
@@ -161,6 +157,15 @@ fn stated_holes(
             Some(StatedHoles(diameters))
         }
     }
+}
+
+/// One diameter for every plate but that which holds the thread.
+fn common(bolt: Bolt<'_>, plates: usize, diameter: Option<f64>) -> [Option<f64>; MOST_PLATES] {
+    let mut all = [diameter; MOST_PLATES];
+    if !matches!(bolt.engagement, Engagement::Nut) {
+        all[plates - 1 - bolt.head_plate] = None;
+    }
+    all
 }
 
 /// A name that no plate has.

@@ -6,7 +6,7 @@ use crate::{
     report::{
         number::{band, brief, cut, four, optional, percent, plain, wrapped},
         table::{Side, aligned},
-        text::{WIDTH, told_in},
+        text::{WIDTH, told_around},
     },
     uncertainty::{Compared, Comparison, Sense, Verdict},
     units::{Shown, System},
@@ -30,7 +30,8 @@ pub fn comparison_in(found: &Comparison, units: System) -> String {
         verdicts(found),
         notes(found),
     ];
-    told_in(&parts.join("\n"), units)
+    let names: Vec<String> = found.joints.iter().map(name).collect();
+    told_around(&parts.join("\n"), (units, &names))
 }
 
 impl Compared {

@@ -36,18 +36,18 @@ impl Table {
 
     /// The line of a file without an answer.
     pub fn without(&self, file: &str, ended: Ended, message: &str) -> String {
-        let word = match ended {
-            Ended::Faulty => "faulty",
-            Ended::Failed => "failed",
-        };
-        let mut cells = vec![file.to_owned(), word.to_owned(), message.to_owned()];
+        let mut cells = vec![file.to_owned(), ended.word().to_owned(), message.to_owned()];
         cells.resize(FIRST.len() + self.columns.len(), String::new());
         line(&cells)
     }
 
-    /// Lines of an answer with the file that they belong to.
-    pub fn of_file(&self, file: &str, rows: &[Vec<String>]) -> String {
-        let first = [file.to_owned(), "done".to_owned(), String::new()];
+    /// Lines of an answer with the file that they belong to; an answer without lines has one that says
+    /// so.
+    pub fn of_file(&self, file: &str, ended: Ended, rows: &[Vec<String>]) -> String {
+        if rows.is_empty() {
+            return self.without(file, ended, "nothing was found");
+        }
+        let first = [file.to_owned(), ended.word().to_owned(), String::new()];
         rows.iter()
             .map(|row| line(&[&first, row.as_slice()].concat()))
             .collect()
@@ -92,13 +92,28 @@ pub const ESTIMATES: Table = Table {
     ],
 };
 
-/// Why a file has no answer.
+/// How a file ended.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub enum Ended {
+    /// With an answer.
+    Done,
+    /// Stopped by the user, with what was found so far.
+    Interrupted,
     /// The file is at fault.
     Faulty,
     /// The chain gave no number.
     Failed,
+}
+
+impl Ended {
+    fn word(self) -> &'static str {
+        match self {
+            Self::Done => "done",
+            Self::Interrupted => "interrupted",
+            Self::Faulty => "faulty",
+            Self::Failed => "failed",
+        }
+    }
 }
 
 /// The cells of every case of an estimate.

@@ -230,17 +230,25 @@ fn bands((series, units): (&Series, System), law: &PowerLaw) -> String {
 
 /// A fitted unknown for the terminal.
 pub fn answer(asked: &Question, answer: &Answer, name: &str) -> String {
+    answer_in(asked, answer, (name, System::Si))
+}
+
+/// The same in a system of units; names and the override at the end stay as they are.
+pub fn answer_in(asked: &Question, answer: &Answer, (name, units): (&str, System)) -> String {
     let shown = |share: f64| asked.unknown.shown(asked.range.at(share));
     let profile = &answer.profile;
     let percent = |ln: f64| format!("{:.1} %", 100.0 * ln.exp_m1());
     let [low, high] = profile.interval;
-    let mut text = format!(
-        "{}\n{}: {} reading{}, {}\nfield {}\nunknown: {}, sought from {} to {}\n\n",
+    let head = format!(
+        "{}\n{}: {} reading{}, {}\n",
         plain(&answer.title),
         plain(name),
         answer.readings,
         if answer.readings == 1 { "" } else { "s" },
         plain(&answer.planes),
+    );
+    let mut text = format!(
+        "field {}\nunknown: {}, sought from {} to {}\n\n",
         answer.field,
         plain(&asked.unknown.name()),
         shown(0.0),
@@ -315,6 +323,7 @@ pub fn answer(asked: &Question, answer: &Answer, name: &str) -> String {
     if !told.is_empty() {
         let _ = write!(text, "\n{told}");
     }
+    let mut text = head + &units.restated(&text);
     let sets = asked.unknown.sets(asked.range.at(profile.best));
     if profile.verdict == Verdict::Determined && !sets.is_empty() {
         text.push_str("\nthe likeliest joint:");

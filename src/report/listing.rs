@@ -11,6 +11,7 @@ use crate::{
 use schemars::JsonSchema;
 use serde::Serialize;
 use serde_json::{Value, json};
+use std::collections::BTreeMap;
 
 /// One kind of catalogue record, ready to be filtered and shown.
 #[derive(Clone, Debug, PartialEq)]
@@ -78,16 +79,27 @@ fn lines(cell: &str) -> String {
     lines.join("\n")
 }
 
+/// What `list --json` prints: records of the catalogue by kind.
+#[derive(Serialize, JsonSchema)]
+pub(super) struct Listed<'a> {
+    /// What made it
+    #[serde(flatten)]
+    head: Head,
+    /// Records by kind, each with the fields of its kind, SI
+    #[schemars(with = "BTreeMap<String, Vec<serde_json::Map<String, Value>>>")]
+    kinds: BTreeMap<&'static str, Vec<&'a Value>>,
+}
+
 /// The listings as one JSON object, records by kind.
 pub fn json(listings: &[Listing]) -> Value {
-    let mut kinds = serde_json::Map::new();
-    let mut object = json!(HEAD);
-    for listing in listings {
-        let records: Vec<&Value> = listing.items.iter().map(|item| &item.record).collect();
-        kinds.insert(listing.kind.to_owned(), json!(records));
-    }
-    object["kinds"] = kinds.into();
-    object
+    let kinds = listings.iter().map(|listing| {
+        let records = listing.items.iter().map(|item| &item.record);
+        (listing.kind, records.collect())
+    });
+    json!(Listed {
+        head: HEAD,
+        kinds: kinds.collect(),
+    })
 }
 
 /// Whether a file was accepted, and its faults: what `check --json` prints of it, and every other command

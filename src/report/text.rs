@@ -71,11 +71,16 @@ pub fn estimate_in(estimate: &Estimate, detail: Detail, units: System) -> String
 /// A finished text in a system of units, its sentences no longer than a screen is wide; rows of a table,
 /// which have wide gaps between words, and labels stay as they are set.
 pub(super) fn told_in(text: &str, units: System) -> String {
+    told_around(text, (units, &[]))
+}
+
+/// The same with names that stand as they are.
+pub(super) fn told_around(text: &str, (units, names): (System, &[String])) -> String {
     if units == System::Si {
         return text.to_owned();
     }
     let mut told = String::new();
-    for line in units.restated(text).lines() {
+    for line in units.restated_around(text, names).lines() {
         let indent = line.len() - line.trim_start().len();
         let parts = line.trim_start().split("  ");
         let gaps = parts

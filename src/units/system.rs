@@ -222,6 +222,20 @@ impl System {
         told
     }
 
+    /// The same with names that users gave, which stand as they are: a `6 mm carrier` stays one.
+    pub fn restated_around(self, text: &str, names: &[String]) -> String {
+        let changed = |name: &&String| self.restated(name) != **name;
+        let Some(name) = names.iter().find(changed) else {
+            return self.restated(text);
+        };
+        let others: Vec<String> = names.iter().filter(|each| *each != name).cloned().collect();
+        let parts = text.split(name.as_str());
+        let parts: Vec<String> = parts
+            .map(|part| self.restated_around(part, &others))
+            .collect();
+        parts.join(name)
+    }
+
     /// Tells a group of numbers in the unit of the largest; the symbol of that unit.
     fn converted(
         self,
@@ -357,6 +371,16 @@ fn rounded(value: f64, digits: usize) -> String {
 #[cfg(test)]
 mod tests {
     use super::*;
+
+    #[test]
+    fn names_of_users_stand_as_they_are() {
+        let names = ["6 mm carrier", "lid", "2 mm"].map(str::to_owned);
+        let told = |text| System::Inch.restated_around(text, &names);
+        assert_eq!(
+            told("6 mm carrier: gap 25.4 µm; lid 50.8 mm, 2 mm"),
+            "6 mm carrier: gap 1.00 mil; lid 2.00 in, 2 mm"
+        );
+    }
 
     #[test]
     fn every_kind_has_the_unit_of_its_exact_definition() {

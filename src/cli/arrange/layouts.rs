@@ -4,7 +4,7 @@ use super::Read;
 use crate::{
     cli::{
         console::{Console, Trouble},
-        output::{Existing, Target},
+        output::Permit,
         results,
     },
     layout::{Answer, Fasten, Row, rewritten},
@@ -15,23 +15,23 @@ use std::{
 };
 
 /// Where the layouts of the front are written.
-pub struct Layouts {
+pub struct Layouts<'a> {
     folder: PathBuf,
-    existing: Existing,
+    permit: Permit<'a>,
     /// Whether their names begin with that of their joint, because several are searched.
     named: bool,
 }
 
-impl Layouts {
+impl<'a> Layouts<'a> {
     /// The folder, made where there is none.
-    pub fn new(folder: &Path, files: &[PathBuf], existing: Existing) -> Result<Self, Trouble> {
+    pub fn new(folder: &Path, files: &[PathBuf], permit: Permit<'a>) -> Result<Self, Trouble> {
         if files.len() > 1 {
             results::apart(files, "-….toml")?;
         }
         results::make(folder)?;
         Ok(Self {
             folder: folder.to_owned(),
-            existing,
+            permit,
             named: files.len() > 1,
         })
     }
@@ -67,11 +67,11 @@ impl Layouts {
                 String::new()
             };
             let path = self.folder.join(format!("{of}{}", name(row)));
-            files.push((Target::new(&path, self.existing)?, text));
+            files.push((self.permit.target(&path)?, text));
         }
         for (target, text) in files {
             target.write(text.as_bytes())?;
-            console.message(&format!("wrote {}\n", target.path.display()));
+            console.wrote(&target.path);
         }
         Ok(())
     }

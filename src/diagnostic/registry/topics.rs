@@ -234,11 +234,11 @@ pub(super) const ENTRIES: &[Entry] = &[
         "topic/outputs",
         "Files that are written",
         [
-            "A file appears whole or not at all, and never over another without `--force`: it is written as \
-             `.ringsum-…` in the folder it belongs to and then renamed. Every target is checked before anything \
+            "A file appears whole or not at all, never over another without `--force` and never over one that is \
+             read: it is written as `.ringsum-…` in the folder it belongs to and then renamed. Every target is checked before anything \
              is computed, but for those of `arrange --write`, which the search names.",
-            "A file that fails leaves nothing of itself behind; those written before it stay. A process that is stopped in the very moment of writing (Ctrl-C, \
-             kill -9, power) cannot clean up: delete the `.ringsum-…` file it may leave, nothing reads it.",
+            "A file that fails leaves nothing of itself behind; those written before it stay, and the answer is told all \
+             the same, with exit code 1. A process that is stopped in the very moment of writing (Ctrl-C, kill -9, power) cannot clean up: delete the `.ringsum-…` file it may leave, nothing reads it.",
         ],
     ),
 ];

@@ -124,7 +124,7 @@ pub static SIZE: Section = Section {
         field(
             "hole",
             Kind::PerPlate(Measure::Quantity(Quantity::Length)),
-            "hole diameter",
+            "hole diameter, for all plates, as a list of one for each or by plate name, `\"*\"` for the others",
             "\"4.5 mm\"",
         )
         .within(1e-5, 1.0),

@@ -5,7 +5,7 @@ use crate::{
     joint::{
         MOST_PLACES, MOST_PLATES,
         collector::{Wording, fault},
-        fields::{Measure, Section},
+        fields::{Measure, OTHERS, Section},
         record::{PerPlate, Point, Record},
         sections::{default_name, own_name},
         tree::{Form, Key, Node, Span},
@@ -113,12 +113,17 @@ impl Walk<'_> {
                 .two(stated, nodes, [measure; 2])
                 .map(|two| PerPlate::Each(two.to_vec())),
             Form::Table(entries) => {
+                let mut others = None;
                 let mut named = Vec::with_capacity(entries.len());
                 for (key, node) in entries {
                     let value = self.single(Stated { node, ..stated }, measure)?;
-                    named.push((key.name.clone(), key.span.clone(), value));
+                    if key.name == OTHERS {
+                        others = Some(value);
+                    } else {
+                        named.push((key.name.clone(), key.span.clone(), value));
+                    }
                 }
-                Some(PerPlate::Named(named))
+                Some(PerPlate::Named { others, named })
             }
             _ => self.single(stated, measure).map(PerPlate::Both),
         }

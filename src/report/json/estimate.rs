@@ -15,7 +15,7 @@ use crate::{
             beside::{MediumTold, RingTold, VerificationTold},
             pressure::{self, PressureTold},
             shapes::{
-                AssumptionTold, CautionTold, ConductanceEnds, Ends, HEAD, Head, LowHigh,
+                AssumptionTold, CautionTold, ConductanceEnds, Ends, ForceEnds, HEAD, Head, LowHigh,
                 StrengthUse, assumptions, bound, cautions, plane_key,
             },
             temperatures::{self, TemperaturesTold},
@@ -150,9 +150,9 @@ struct BoltTold {
     /// Whether it is left out, so that its hole alone is there
     missing: bool,
     /// Clamp force at assembly, N
-    force: Ends,
+    force: ForceEnds,
     /// Clamp force in service, N
-    force_in_service: Ends,
+    force_in_service: ForceEnds,
     /// Stress over yield at assembly; null without a yield strength
     strength_use: Option<StrengthUse>,
     /// Stress over yield in service at the worst case, share of 1; null without a yield strength

@@ -9,12 +9,12 @@ use crate::report::{
     drivers::DriversResult,
     fit::{SeriesResult, UnknownResult},
     json::{CompareResult, EstimateResult, TorqueResult},
-    listing::{Checked, Unanswered},
+    listing::{Checked, Listed, Unanswered},
 };
 
 /// Commands whose JSON has a schema.
-pub const COMMANDS: [&str; 8] = [
-    "estimate", "torque", "compare", "drivers", "arrange", "fit", "check", "explain",
+pub const COMMANDS: [&str; 9] = [
+    "estimate", "torque", "compare", "drivers", "arrange", "fit", "check", "list", "explain",
 ];
 
 /// The schema of what a command prints with `--json`; without a command that of all.
@@ -54,8 +54,10 @@ pub fn schema(command: Option<&str>) -> Value {
 
 /// References to the forms of what a command prints.
 fn printed(command: &str, generator: &mut SchemaGenerator) -> Vec<Value> {
-    if command == "explain" {
-        return vec![of::<CodeTold>(generator), of::<CodesTold>(generator)];
+    match command {
+        "explain" => return vec![of::<CodeTold>(generator), of::<CodesTold>(generator)],
+        "list" => return vec![of::<Listed>(generator)],
+        _ => {}
     }
     let mut forms = match command {
         "estimate" => vec![of::<EstimateResult>(generator)],
@@ -70,7 +72,7 @@ fn printed(command: &str, generator: &mut SchemaGenerator) -> Vec<Value> {
         _ => Vec::new(),
     };
     forms.push(of::<Checked>(generator));
-    if ["estimate", "torque", "drivers", "arrange"].contains(&command) {
+    if ["estimate", "torque", "compare", "drivers", "arrange", "fit"].contains(&command) {
         forms.push(of::<Unanswered>(generator));
     }
     forms

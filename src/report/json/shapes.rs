@@ -33,12 +33,32 @@ pub const HEAD: Head = Head {
 /// Low, nominal and high of one number.
 #[derive(Serialize, JsonSchema)]
 pub struct Ends {
-    /// 5 % quantile of the draws, or the least of a force; null without draws
+    /// 5 % quantile of the draws, or where a confidence was asked for the lower end of that; null without
+    /// draws
     pub low: Option<f64>,
     /// The value at nominal inputs
     pub nominal: f64,
-    /// 95 % quantile of the draws, or the most of a force; null without draws
+    /// 95 % quantile of the draws, or where a confidence was asked for the upper end of that; null without
+    /// draws
     pub high: Option<f64>,
+}
+
+/// Least, nominal and most of a clamp force, N.
+#[derive(Serialize, JsonSchema)]
+pub struct ForceEnds {
+    /// What scatter and losses leave at least; it needs no draws
+    pub low: Option<f64>,
+    /// The value at nominal inputs
+    pub nominal: f64,
+    /// What scatter gives at most; it needs no draws
+    pub high: Option<f64>,
+}
+
+impl From<&Band> for ForceEnds {
+    fn from(band: &Band) -> Self {
+        let Ends { low, nominal, high } = Ends::from(band);
+        Self { low, nominal, high }
+    }
 }
 
 impl From<&Band> for Ends {

@@ -7,7 +7,9 @@ use serde_json::{Value, json};
 use crate::{
     estimate::{Minimum, TorquePoint, TorqueSweep},
     report::json::{
-        shapes::{CautionTold, Ends, HEAD, Head, ResistanceEnds, StrengthUse, bound, cautions},
+        shapes::{
+            CautionTold, ForceEnds, HEAD, Head, ResistanceEnds, StrengthUse, bound, cautions,
+        },
         window::{self, LimitTold, WindowTold},
     },
 };
@@ -115,7 +117,7 @@ struct PointTold {
     /// Torque, N m
     torque: f64,
     /// Clamp force at assembly, N
-    force: Ends,
+    force: ForceEnds,
     /// Heated zone to sink surface
     source_to_sink: ResistanceEnds,
     /// Faying faces alone
