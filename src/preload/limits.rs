@@ -472,7 +472,14 @@ mod tests {
             assert!((of(PROOF_IN_SERVICE) / (force / proof) - 1.0).abs() < 1e-12);
             let head = of("pressure under the head in service");
             assert!((head / (force / (400e6 * seat)) - 1.0).abs() < 1e-12);
-            // Every limit but the one with torsion grows with the force.
+            // Tension over A₀ with half the torsion of tightening over W = π d₀³/12, of 640 MPa; rounding.
+            let (diameter, pi) = (insert.thread.stress_diameter, std::f64::consts::PI);
+            let tension = force / (pi / 4.0 * diameter.powi(2));
+            let twist = 0.5 * torsion(&insert, Place::HIGHEST_FORCE);
+            let shear = twist / (pi / 12.0 * diameter.powi(3));
+            let stress = (tension.powi(2) + 3.0 * shear.powi(2)).sqrt();
+            assert!((of(IN_SERVICE) / (stress / 640e6) - 1.0).abs() < 1e-12);
+            // Every limit but the one with torsion grows in proportion to the force.
             for (one, twice) in found.iter().zip(used(2.0 * force)) {
                 assert_eq!(one.name, twice.name);
                 if one.name != IN_SERVICE {
