@@ -70,3 +70,41 @@ pub fn constriction(x: f64) -> f64 {
         -1.40925 + square * (0.29591 + square * (0.05254 + square * (0.02105 + square * 0.01107)));
     1.0 + x * odd
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    // Both halves of the body around a lone spot of radius a on its wide face: R = 1/(2 k a), exact. The spot
+    // fills x of the radius, and the walls of the cylinder matter to first order in x: 1.41 x, rounded up.
+    #[test]
+    fn a_small_contact_conducts_as_a_spot_on_a_half_space() {
+        let crowned = Crowned {
+            pressure: 1e2,
+            youngs_moduli: [70e9, 200e9],
+            radius: 0.020,
+            flatness: 50e-6,
+        };
+        let x = crowned.contact_ratio();
+        assert!((1e-3..2e-2).contains(&x), "{x}");
+        let spot = 2.0 * 167.0 * x * crowned.radius;
+        let face = PI * crowned.radius * crowned.radius;
+        let found = crowned.conductance(167.0) * face / spot;
+        assert!(found > 1.0 && found < 1.0 + 1.5 * x, "{found} {x}");
+    }
+
+    // 0.8 % up to 0.3: what the docstring states of (1 − x)^1.5, the factor that the spots take.
+    #[test]
+    fn constriction_fades_as_the_contact_fills_the_face() {
+        assert!((constriction(0.0) - 1.0).abs() < f64::EPSILON);
+        for step in 1..=30 {
+            let x = f64::from(step) / 100.0;
+            let ratio = constriction(x) / (1.0 - x).powf(1.5);
+            assert!((ratio - 1.0).abs() < 8e-3, "{x}: {ratio}");
+        }
+        for step in 1..=65 {
+            let x = f64::from(step) / 100.0;
+            assert!(constriction(x) < constriction(x - 0.01) && constriction(x) > 0.0);
+        }
+    }
+}

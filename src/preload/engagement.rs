@@ -354,4 +354,70 @@ mod tests {
         };
         assert!(engagement_check(&fastener, &weak).unwrap().is_short());
     }
+
+    /// Inch thread by its formulas, from the diameter in inches and the threads per inch.
+    fn unified(diameter: f64, per_inch: f64) -> Thread {
+        let mut thread = metric(diameter * INCH, INCH / per_inch);
+        thread.inch = true;
+        thread
+    }
+
+    #[test]
+    fn inch_limits_are_those_of_the_tables_of_asme_b1_1() {
+        // 2A and 2B limits in inches. #4-40 from memory; nut limits of the others seen in UNC tables, their bolt
+        // limits from memory. Tables print 0.0001 in, the minor diameter of the larger ones 0.001 in; the
+        // standard rounds allowance and tolerance one by one, so that one unit is asked.
+        for (diameter, per_inch, printed) in [
+            (0.112, 40.0, [0.0939, 0.0991, 0.0925, 0.1061]),
+            (0.25, 20.0, [0.207, 0.2224, 0.2127, 0.2408]),
+            (0.5, 13.0, [0.434, 0.4565, 0.4435, 0.4876]),
+        ] {
+            let limits = ThreadLimits::of(&unified(diameter, per_inch));
+            let minor = if diameter < 0.2 { 1e-4 } else { 1e-3 };
+            for ((found, printed), unit) in [
+                limits.nut_minor_most,
+                limits.nut_pitch_most,
+                limits.bolt_pitch_least,
+                limits.bolt_major_least,
+            ]
+            .into_iter()
+            .zip(printed)
+            .zip([minor, 1e-4, 1e-4, 1e-4])
+            {
+                let found = found / INCH;
+                assert!(
+                    (found - printed).abs() < unit,
+                    "{diameter}: {found} {printed}"
+                );
+            }
+        }
+    }
+
+    #[test]
+    fn inch_tolerances_follow_the_formula_of_the_standard() {
+        // #4-40 worked by hand in inches: D 0.112, P 0.025, P^(2/3) 0.0854988; T = 0.0015 (0.482028 + 0.334664)
+        // + 0.015 · 0.0854988 = 0.0025075. Six digits of hand work: 1e-4.
+        let found = inch_tolerances(&unified(0.112, 40.0));
+        for (found, hand) in [
+            (found.allowance, 0.000_752_25),
+            (found.bolt_pitch, 0.002_507_5),
+            (found.bolt_major, 0.005_129_9),
+            (found.nut_pitch, 0.003_259_8),
+            (found.nut_minor, 0.008_971_4),
+        ] {
+            assert!((found / INCH / hand - 1.0).abs() < 1e-4, "{found} {hand}");
+        }
+        // 3/8-16, P 0.0625: P^(2/3) 0.157490, T = 0.0015 (0.721125 + 0.612372) + 0.015 · 0.157490 = 0.0043626;
+        // nut minor 0.015625 − 0.0015625.
+        let found = inch_tolerances(&unified(0.375, 16.0));
+        for (found, hand) in [
+            (found.allowance, 0.001_308_8),
+            (found.bolt_pitch, 0.004_362_6),
+            (found.bolt_major, 0.009_449_4),
+            (found.nut_pitch, 0.005_671_4),
+            (found.nut_minor, 0.014_062_5),
+        ] {
+            assert!((found / INCH / hand - 1.0).abs() < 1e-4, "{found} {hand}");
+        }
+    }
 }

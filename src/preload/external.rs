@@ -116,7 +116,11 @@ pub fn stress_in_service(thread: &Thread, load: Load) -> f64 {
 #[cfg(test)]
 mod tests {
     use super::*;
-    use crate::preload::{fixture::m6, losses::Compliance};
+    use crate::preload::{
+        fixture::m6,
+        losses::Compliance,
+        springs::{Disc, SpringStack},
+    };
 
     const ELASTICITY: Elasticity = Elasticity {
         compliance: Compliance {
@@ -223,5 +227,52 @@ mod tests {
         let found = none.on(&ELASTICITY, CLAMP);
         assert_eq!(found.residual, CLAMP);
         assert!(found.separation.is_infinite());
+    }
+
+    #[test]
+    fn springs_that_stay_open_take_part_in_the_share_of_the_load() {
+        // Four sets of one disc 16 × 8.2 × 0.9 mm, cone 0.35 mm, flat at 1.32 kN: 900 N of clamp and 300 N of
+        // load leave them open, so that the bolt's side is as soft where it ends as their curve is steep there.
+        let springs = SpringStack {
+            disc: Disc {
+                outer_diameter: 16e-3,
+                inner_diameter: 8.2e-3,
+                thickness: 0.9e-3,
+                cone_height: 0.35e-3,
+                youngs_modulus: 206e9,
+                poisson: 0.3,
+            },
+            parallel: 1,
+            series: 4,
+        };
+        let sprung = Elasticity {
+            springs: Some(springs),
+            ..ELASTICITY
+        };
+        let load = ServiceLoad {
+            load: Bounds::uniform([100.0, 200.0, 300.0]),
+            introduction: Bounds::exact(1.0),
+        };
+        let clamp = Bounds::uniform([700.0, 800.0, 900.0]);
+        let found = load.on(&sprung, clamp).load_factor;
+        for (found, force) in [
+            (found.low, 700.0),
+            (found.nominal, 800.0),
+            (found.high, 1200.0),
+        ] {
+            let slope = (springs.deflection(force + 1.0) - springs.deflection(force - 1.0)) / 2.0;
+            let share = 1e-9 / (4e-9 + slope + 1e-9);
+            // The middle of 2 N of the curve: 1e-4.
+            assert!(
+                (found / share - 1.0).abs() < 1e-4,
+                "{force}: {found} {share}"
+            );
+        }
+        // Springs that the load presses flat no longer yield: 1/(4 + 1).
+        let flat = load.on(&sprung, Bounds::exact(1300.0)).load_factor;
+        assert!(
+            (flat.high - 0.2).abs() < 1e-12 && flat.low < 0.01,
+            "{flat:?}"
+        );
     }
 }

@@ -379,4 +379,32 @@ mod tests {
             prop_assert!(band.low * (1.0 - 1e-12) <= force && force <= band.high * (1.0 + 1e-12));
         }
     }
+
+    #[test]
+    fn a_tightening_factor_is_a_scatter_and_back() {
+        for factor in [1.0, 1.11, 1.6, 1.8, 2.51, 4.0] {
+            let spread = Spread::of_tightening_factor(factor);
+            // The same fraction twice: rounding alone.
+            assert!((spread.tightening_factor() - factor).abs() < 1e-12);
+            let band = spread.about(1e4);
+            assert!((band.high / band.low - factor).abs() < 1e-12);
+        }
+        // Scatter seen in VDI 2230:1986, 17, 28 and 43 %, an impact wrench 60 %; printed or computed factors of
+        // three digits, half of the last.
+        for (scatter, factor) in [(0.17, 1.41), (0.28, 1.78), (0.43, 2.51), (0.60, 4.00)] {
+            let spread = Spread {
+                scatter,
+                ..Spread::default()
+            };
+            let found = spread.tightening_factor();
+            assert!((found - factor).abs() < 5.1e-3, "{scatter}: {found}");
+            let back = Spread::of_tightening_factor(factor).scatter;
+            // Half a digit of the factor is 0.2 % of scatter at most.
+            assert!((back - scatter).abs() < 2e-3, "{factor}: {back}");
+        }
+        // M12 8.8, a fastener maker's example for VDI 2230-1:2015, seen: 41.9 kN / 1.8 = 23.3 kN, printed to 0.1 kN.
+        let spread = Spread::of_tightening_factor(1.8);
+        let band = spread.about(41.9 / (1.0 + spread.scatter));
+        assert!((band.high - 41.9).abs() < 1e-9 && (band.low - 23.3).abs() < 0.05);
+    }
 }

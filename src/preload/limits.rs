@@ -348,7 +348,7 @@ mod tests {
     use super::*;
     use crate::{
         joint::{Bounds, Friction},
-        preload::fixture::{aluminium, datum, m6, m6_with},
+        preload::fixture::{aluminium, datum, joint, m6, m6_with},
     };
 
     fn supports() -> Supports {
@@ -451,5 +451,113 @@ mod tests {
         given.tightening = Tightening::Preload(Bounds::exact(7e3));
         let [nominal, high] = strength_use(&given).unwrap();
         assert!(nominal < high);
+    }
+
+    #[test]
+    fn a_limit_in_service_is_used_as_the_force_says() {
+        let mut insert = m6();
+        insert.engagement = Engagement::Tapped { length: 6e-3 };
+        let mut brittle = supports();
+        brittle.brittle = [Some(300e6), Some(200e6)];
+        let used = |force: f64| limits_in_service(&insert, &brittle, force);
+        // Force over force, by hand: 580 MPa on the stress area; 400 MPa under the head, π (4.44² − 3.3²) mm².
+        let proof = 580e6 * insert.thread.stress_area;
+        let seat = std::f64::consts::PI * (4.44e-3_f64.powi(2) - 3.3e-3_f64.powi(2));
+        for force in [0.4 * proof, proof, 1.3 * proof, 2.7 * proof] {
+            let found = used(force);
+            let of = |name: &str| {
+                let limit = found.iter().find(|limit| limit.name == name);
+                limit.expect("the limit is judged").used
+            };
+            assert!((of(PROOF_IN_SERVICE) / (force / proof) - 1.0).abs() < 1e-12);
+            let head = of("pressure under the head in service");
+            assert!((head / (force / (400e6 * seat)) - 1.0).abs() < 1e-12);
+            // Tension over A₀ with half the torsion of tightening over W = π d₀³/12, of 640 MPa; rounding.
+            let (diameter, pi) = (insert.thread.stress_diameter, std::f64::consts::PI);
+            let tension = force / (pi / 4.0 * diameter.powi(2));
+            let twist = 0.5 * torsion(&insert, Place::HIGHEST_FORCE);
+            let shear = twist / (pi / 12.0 * diameter.powi(3));
+            let stress = (tension.powi(2) + 3.0 * shear.powi(2)).sqrt();
+            assert!((of(IN_SERVICE) / (stress / 640e6) - 1.0).abs() < 1e-12);
+            // Every limit but the one with torsion grows in proportion to the force.
+            for (one, twice) in found.iter().zip(used(2.0 * force)) {
+                assert_eq!(one.name, twice.name);
+                if one.name != IN_SERVICE {
+                    assert!((twice.used / one.used - 2.0).abs() < 1e-12, "{twice:?}");
+                }
+            }
+        }
+        // What knows no torsion is used in service as it is at assembly under the same force: rounding alone.
+        let assembly = limits(&insert, &brittle);
+        let twins: Vec<(f64, f64)> = used(force_band(&insert).high)
+            .iter()
+            .filter_map(|limit| {
+                let name = at_assembly(limit.name)?;
+                let twin = assembly.iter().find(|limit| limit.name == name)?;
+                Some((limit.used, twin.used))
+            })
+            .collect();
+        // Head, nut, a brittle seat under each, thread; the two brittle ones bear one name, so that only the first
+        // is its own twin.
+        assert_eq!(twins.len(), 5);
+        for (service, twin) in [twins[0], twins[1], twins[2], twins[4]] {
+            assert!((service / twin - 1.0).abs() < 1e-12, "{service} {twin}");
+        }
+    }
+
+    #[test]
+    fn brittle_plates_bear_what_their_own_seat_may_press() {
+        let mut joint = joint();
+        let fastener = m6();
+        let unstated = Supports::in_joint(&joint, &fastener);
+        assert_eq!(unstated, supports());
+        joint.plates[1].flexural_strength = Some(300e6);
+        joint.plates[1].material.bearing_limit = None;
+        let at_the_nut = Supports::in_joint(&joint, &fastener);
+        // A third of 300 MPa over (1 − 2 · 0.33)/2, the fixture's Poisson ratio: 588.2 MPa.
+        let [head, nut] = at_the_nut.brittle;
+        assert_eq!(head, None);
+        assert!((nut.unwrap() / (100e6 / 0.17) - 1.0).abs() < 1e-12);
+        assert_eq!(
+            [at_the_nut.head_limit, at_the_nut.nut_limit],
+            [Some(400e6), None]
+        );
+        // A bolt from the other side has its head there.
+        let mut turned = fastener.clone();
+        turned.head_plate = 1;
+        let at_the_head = Supports::in_joint(&joint, &turned);
+        assert_eq!(at_the_head.brittle, [nut, None]);
+        assert_eq!(
+            [at_the_head.head_limit, at_the_head.nut_limit],
+            [None, Some(400e6)]
+        );
+        // And between two others a plate bears no seat.
+        let mut middle = joint.clone();
+        middle.plates.insert(1, middle.plates[0].clone());
+        middle.plates.swap(1, 2);
+        assert_eq!(Supports::in_joint(&middle, &fastener).brittle, [None; 2]);
+        let uneven = {
+            joint.plates[0].flatness = Some(10e-6);
+            Supports::in_joint(&joint, &fastener).brittle[1]
+        };
+        assert!(uneven < nut);
+    }
+
+    #[test]
+    fn a_plate_is_pressed_flat_from_both_faces_of_its_wider_interface() {
+        let mut stack = joint();
+        stack.plates.push(stack.plates[0].clone());
+        let uneven = |joint: &Joint| [0, 1, 2].map(|plate| unevenness(joint, plate));
+        assert_eq!(uneven(&stack), [None; 3]);
+        stack.plates[0].flatness = Some(10e-6);
+        // Nothing is stated of the lower interface, whose warm plate counts nothing.
+        assert_eq!(uneven(&stack), [Some(10e-6), Some(10e-6), None]);
+        stack.plates[2].flatness = Some(25e-6);
+        assert_eq!(uneven(&stack), [Some(10e-6), Some(25e-6), Some(25e-6)]);
+        stack.plates[1].flatness = Some(40e-6);
+        let [first, middle, last] = uneven(&stack).map(Option::unwrap);
+        // 10 + 40 and 40 + 25 µm; sums of a few numbers: rounding.
+        assert!((first - 50e-6).abs() < 1e-18 && (last - 65e-6).abs() < 1e-18);
+        assert!((middle - 65e-6).abs() < 1e-18);
     }
 }

@@ -358,4 +358,34 @@ mod tests {
             );
         }
     }
+
+    #[test]
+    fn growth_of_the_plates_over_the_bolt_is_a_force_over_both_compliances() {
+        let part = |length: f64, expansion: f64, rise: f64| Part {
+            length,
+            strain: expansion * rise,
+        };
+        // Aluminium 12 and 8 mm under a steel bolt of 20 mm, 50 K: 20 · (23.6 − 11.5) · 50 = 12.1 µm over 6 nm/N.
+        let gain = |rise: f64| {
+            let plates = [12e-3, 8e-3].map(|length| part(length, 23.6e-6, rise));
+            let bolt = part(20e-3, 11.5e-6, rise);
+            (
+                STIFF.compliance.temperature_gain(&plates, bolt),
+                growth(&plates, bolt),
+            )
+        };
+        let (warm, longer) = gain(50.0);
+        assert!((warm / (12.1e-6 / 6e-9) - 1.0).abs() < 1e-12, "{warm}");
+        // The same balance of lengths as without the short form, and as much lost in the cold.
+        assert!((STIFF.after(5000.0, longer) - 5000.0 - warm).abs() < 1e-9);
+        assert!((gain(-50.0).0 + warm).abs() < 1e-9);
+        // A softer plate keeps more of what the bolt's side lets go: twice 6 nm/N is half the gain.
+        let soft = Compliance {
+            bolt: 5e-9,
+            plates: 7e-9,
+        };
+        let plates = [part(20e-3, 23.6e-6, 50.0)];
+        let halved = soft.temperature_gain(&plates, part(20e-3, 11.5e-6, 50.0));
+        assert!((halved / warm - 0.5).abs() < 1e-12);
+    }
 }

@@ -45,3 +45,52 @@ pub fn accommodation(gas_mass: f64, molecule: Molecule, wall: Wall) -> f64 {
     weight * effective_mass / (6.8 + effective_mass)
         + (1.0 - weight) * 2.4 * ratio / (1.0 + ratio).powi(2)
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    const HELIUM: f64 = 4.0026;
+    const AIR: f64 = 28.965;
+
+    fn aluminium(temperature: f64) -> Wall {
+        Wall {
+            temperature,
+            molar_mass: 26.98,
+        }
+    }
+
+    // At 273 K the second term is nothing: M*/(6.8 + M*), by hand 4.0026/10.8026 and 40.551/47.351.
+    #[test]
+    fn cold_walls_hold_the_heavier_gas_better() {
+        let helium = accommodation(HELIUM, Molecule::Monatomic, aluminium(273.0));
+        assert!((helium - 0.37052).abs() < 1e-5, "{helium}");
+        let air = accommodation(AIR, Molecule::Polyatomic, aluminium(273.0));
+        assert!((air - 0.85639).abs() < 1e-5, "{air}");
+    }
+
+    // Molecules of a very hot wall meet its atoms one by one, 2.4 μ/(1 + μ)²: equal masses give 0.6, and the
+    // wall may as well be the lighter as the heavier partner. What is left of e at 273 · 40 K is 2e-10.
+    #[test]
+    fn very_hot_walls_meet_molecules_as_single_atoms() {
+        let hot = |gas: f64, wall: f64| {
+            let wall = Wall {
+                temperature: 273.0 * 40.0,
+                molar_mass: wall,
+            };
+            accommodation(gas, Molecule::Monatomic, wall)
+        };
+        assert!((hot(40.0, 40.0) - 0.6).abs() < 1e-9);
+        assert!((hot(4.0, 108.0) - hot(108.0, 4.0)).abs() < 1e-9);
+        assert!((hot(4.0, 36.0) - 2.4 * 0.09).abs() < 1e-9);
+    }
+
+    // Song & Yovanovich from memory, aluminium at 600 K, computed for this project: half of the last digit.
+    #[test]
+    fn hot_aluminium_holds_air_and_helium_less() {
+        let air = accommodation(AIR, Molecule::Polyatomic, aluminium(600.0));
+        assert!((air - 0.73).abs() < 5e-3, "{air}");
+        let helium = accommodation(HELIUM, Molecule::Monatomic, aluminium(600.0));
+        assert!((helium - 0.32).abs() < 5e-3, "{helium}");
+    }
+}

@@ -2,7 +2,7 @@
 
 use super::*;
 use crate::{
-    joint::Bounds,
+    joint::{Bounds, Isolating},
     preload::fixture::{aluminium, datum, m6, m6_with},
 };
 
@@ -221,4 +221,42 @@ fn torque_window_carries_its_duties() {
         "{text}"
     );
     assert!(told(None).contains("at no torque"), "{}", told(None));
+}
+
+#[test]
+fn a_bolt_that_just_reaches_yield_does_not_yield_yet() {
+    let mut bolt = m6();
+    let reached = limits::stress(&bolt, Place::HIGHEST_FORCE);
+    bolt.grade.yield_strength = Some(datum(reached));
+    // The same number over itself: exactly one.
+    assert_eq!(
+        strength_use(&bolt).map(|[_, high]| high.to_bits()),
+        Some(f64::to_bits(1.0))
+    );
+    expect(&bolt, "preload/over-90-percent");
+    assert!(!codes(&bolt, &supports()).contains(&"preload/over-yield"));
+    bolt.grade.yield_strength = Some(datum(reached * (1.0 - 1e-9)));
+    expect(&bolt, "preload/over-yield");
+}
+
+#[test]
+fn isolating_washers_of_plastic_creep_and_those_of_ceramic_do_not() {
+    let washers = |kind: MaterialKind, bearing_limit: f64| {
+        let mut material = aluminium();
+        material.kind = kind;
+        material.bearing_limit = Some(datum(bearing_limit));
+        let mut bolt = m6();
+        bolt.isolating = Some(Isolating {
+            material,
+            thickness: 1.5e-3,
+            count: 2,
+        });
+        bolt
+    };
+    let creeps = codes(&washers(MaterialKind::Polymer, 1e9), &supports());
+    assert_eq!(creeps, ["preload/isolating-creep"]);
+    let sound = codes(&washers(MaterialKind::Brittle, 1e9), &supports());
+    assert_eq!(sound, Vec::<&str>::new());
+    let crushed = codes(&washers(MaterialKind::Brittle, 50e6), &supports());
+    assert_eq!(crushed, ["preload/head-pressure"]);
 }
