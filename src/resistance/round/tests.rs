@@ -184,8 +184,7 @@ fn a_shank_alone_stands_in_series_with_its_plates() {
                 ..pair(inlet, outlet)
             };
             let heat = solved(&problem, |_| 0.0);
-            // Levels of loose plates hang on the shank alone.
-            assert!(heat.health.heat_balance < 1e-8, "{inlet:?} {outlet:?}");
+            assert!(heat.health.heat_balance < ROUNDING, "{inlet:?} {outlet:?}");
             heat.path.source_to_sink
         };
         assert!(apart(0.0).is_infinite());
@@ -194,7 +193,7 @@ fn a_shank_alone_stands_in_series_with_its_plates() {
         let held = matches!(inlet, Inlet::Isothermal(_)) && outlet == Outlet::IsothermalBack;
         // Between planes that are held the shank bridges all of it.
         assert_eq!(plates > 1e-3, !held, "{what} {plates}");
-        same(apart(0.05), plates + 20.0, 1e-9, &what);
+        same(apart(0.05), plates + 20.0, ROUNDING, &what);
     }
 }
 
@@ -258,19 +257,22 @@ fn thin_discs_from_rim_to_rim_are_a_radial_fin() {
     let m = (2.0 / (t * (1.0 / h + 2.0 * t / 3.0))).sqrt();
     let [zero, one] = bessel(m * rim);
     let exact = zero / (PI * rim * t * m * one);
-    // What the fin leaves out is of the order of (m t)², 4e-3 of a share of it.
-    same(heat.path.source_to_sink, exact, 2e-4, "fin");
+    // What the fin leaves out is a share of (m t)², 4e-3; 2e-5 measured.
+    same(heat.path.source_to_sink, exact, 1e-4, "fin");
     assert!(heat.health.heat_balance < ROUNDING);
     // The drop on the axis over that at the rim, where both plates are held one kelvin apart.
     let [first, second] = &heat.profiles.inner;
     let axis = first.temperatures[0] - second.temperatures[0];
     let last = first.temperatures.len() - 1;
     let at_rim = first.temperatures[last] - second.temperatures[last];
-    same(axis / at_rim, zero.recip(), 5e-3, "axis");
-    // Rings tell the same network from above.
+    // Of θ, between means over the thickness, the faces have 1/h of 1/h + 2t/(3k).
+    let faces = zero.recip() / (1.0 + 2.0 * t * h / 3.0);
+    same(axis / at_rim, faces, 1e-4, "axis");
+    // Two hundred rings tell the same from above.
     let upper = heat.path.resistance_upper.unwrap();
-    same(upper, exact, 2e-3, "rings");
-    assert_eq!(heat.path.perfect_contact, 0.0);
+    same(upper, exact, 2e-4, "rings");
+    // Held rims that touch leave nothing.
+    assert!(heat.path.perfect_contact.abs() < f64::MIN_POSITIVE);
 }
 
 // A bonded pair over a film is one fin of both thicknesses: θ'' + θ'/r = m² θ, m² = 1/(2t k (1/h + 2t/(3k))),
@@ -299,6 +301,25 @@ fn a_bonded_pair_over_a_film_is_one_fin() {
     assert!(off.abs() < open, "{off:+.2e} {open:.2e}");
     // What a tied node passes on is a small difference of what thin plates conduct across.
     assert!(heat.health.heat_balance < 1e-8);
+}
+
+// Fourier's law is linear: what conducts a million times as well resists a millionth, and the balance, which
+// is told over the heat, stays what rounding leaves.
+#[test]
+fn plates_a_million_times_as_good_resist_a_millionth() {
+    let one = pair(Inlet::Isothermal(FACE), Outlet::Film(0.8));
+    let mut other = pair(Inlet::Isothermal(FACE), Outlet::Film(0.8e6));
+    for plate in &mut other.plates {
+        plate.conductivity = plate.conductivity.map(|value| 1e6 * value);
+    }
+    let law = |radius: f64| 2.5 / radius;
+    let one = solved(&one, law);
+    let other = solved(&other, |radius| 1e6 * law(radius));
+    let [own, scaled] = [&one, &other].map(|heat| heat.path.source_to_sink);
+    same(1e6 * scaled, own, ROUNDING, "resistance");
+    for heat in [one, other] {
+        assert!(heat.health.heat_balance < ROUNDING, "{:?}", heat.health);
+    }
 }
 
 // Heat turned round takes the same way: exchanged plates and ends resist alike (reciprocity). Every grid
@@ -339,11 +360,11 @@ fn plates_exchanged_resist_alike() {
             same(
                 one.path.source_to_sink,
                 other.path.source_to_sink,
-                1e-9,
+                ROUNDING,
                 &what,
             );
             for heat in [one, other] {
-                assert!(heat.health.heat_balance < 1e-8, "{what}");
+                assert!(heat.health.heat_balance < ROUNDING, "{what}");
             }
         }
     }
@@ -354,7 +375,7 @@ fn plates_exchanged_resist_alike() {
 #[test]
 fn a_weak_film_under_small_plates_loses_no_digits() {
     let side = 1e-3;
-    let mut problem = pair(Inlet::Isothermal(FACE), Outlet::Film(1e-3));
+    let mut problem = pair(Inlet::Isothermal(FACE), Outlet::Film(2e-5));
     for plate in &mut problem.plates {
         plate.hole_radius *= side;
         plate.rim_radius *= side;
@@ -366,16 +387,18 @@ fn a_weak_film_under_small_plates_loses_no_digits() {
     let heat = solved(&problem, |_| h);
     let area = PI * (9.0 - 0.36) * side * side;
     let exact = (0.7 / 3.0 * side + 1.9 / 0.4 * side + 1.0 / h) / area;
+    // The film stands at 2e9 K/W, the wall at 187: 1e-7 of it would be lost beside the film, 1e-10 is.
     same(heat.path.source_to_sink, exact, 1e-9, "wall");
     assert!(
-        heat.health.heat_balance < 1e-9,
+        heat.health.heat_balance < ROUNDING,
         "{}",
         heat.health.heat_balance
     );
 }
 
 // Quadratic elements hold r² and z² exactly: means over an annulus are (a² + b²)/2, over a thickness t²/3,
-// whatever the lines, if places, weights and lines at the edges of a patch are right.
+// whatever the lines, if places, weights and lines at the edges of a patch are right. Rounding of some
+// thousand terms.
 #[test]
 fn weights_add_up_to_areas_and_know_their_places() {
     let patch = [1.3, 2.4];
@@ -440,7 +463,11 @@ fn heat_in_is_heat_across_is_heat_out() {
         for (index, law) in laws.iter().enumerate() {
             let heat = plates.solve(law).unwrap();
             let what = format!("{inlet:?} {outlet:?} {index}");
-            assert!(heat.health.heat_balance < 1e-8, "{what}: {:?}", heat.health);
+            assert!(
+                heat.health.heat_balance < ROUNDING,
+                "{what}: {:?}",
+                heat.health
+            );
             assert!(
                 heat.path.source_to_sink >= heat.path.perfect_contact,
                 "{what}"
