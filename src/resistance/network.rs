@@ -243,7 +243,7 @@ mod tests {
         assert_eq!(rings.flow(&plates, &vec![0.0; conductance.len()]), None);
     }
 
-    // Ring areas, rings and all are linear in the heat: drawn out, it leaves the plates below the coolant.
+    // The network is linear: heat drawn out leaves below the coolant what heat put in leaves above it.
     #[test]
     fn heat_drawn_out_leaves_every_place_below_the_coolant() {
         let (mut rings, conductance) = heated_in_the_middle();
