@@ -80,3 +80,44 @@ impl Annulus {
             })
     }
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::resistance::network::edges;
+
+    fn annulus() -> Annulus {
+        Annulus {
+            edges: edges(0.5, 1.4, 3.0, 40),
+            thickness: [0.4, 1.1],
+            conductivity: [2.0, 0.7],
+        }
+    }
+
+    // π (b² − a²), ring by ring and in all.
+    #[test]
+    fn rings_have_their_areas() {
+        let annulus = annulus();
+        let columns = annulus.rings().columns;
+        for (pair, area) in annulus.edges.windows(2).zip(&columns.patch_area) {
+            let exact = PI * (pair[1] * pair[1] - pair[0] * pair[0]);
+            // Squares of narrow rings cancel.
+            assert!((area / exact - 1.0).abs() < 1e-12);
+        }
+        for areas in [&columns.plate_area[0], &columns.plate_area[1]] {
+            let whole: f64 = areas.iter().sum();
+            assert!((whole / (PI * (9.0 - 0.25)) - 1.0).abs() < 1e-12);
+        }
+    }
+
+    // Walls in series, t/(k A) and 1/(h A): the rings contain them, and rounding is left.
+    #[test]
+    fn an_even_conductance_is_a_composite_wall() {
+        let area = PI * (9.0 - 0.25);
+        let wall = (0.4 / 2.0 + 1.1 / 0.7 + 1.0 / 3.0) / area;
+        for ends in [Ends::Isothermal, Ends::Flux] {
+            let found = annulus().resistance(|_| 3.0, ends);
+            assert!((found / wall - 1.0).abs() < 1e-10, "{ends:?} {found}");
+        }
+    }
+}

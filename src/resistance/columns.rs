@@ -61,3 +61,6 @@ pub use section::{Across, Section};
 pub use stack::{Body, Conductivity, Meeting, Side, Slab, Stack};
 pub use terminals::{Bolt, Edge, Rim, Seat, Sink, Source, Terminals};
 pub use zone::Zone;
+
+#[cfg(test)]
+mod tests;

@@ -112,4 +112,17 @@ mod tests {
         let area = view.plates[0].region.area_within(f64::INFINITY);
         assert!((area / (0.03 * 0.03) - 1.0).abs() < 1e-12);
     }
+
+    // On a lattice of 3 by 4 the corners of a cell lie 2.5 from its bolt and the bolts across them 5, in
+    // whole numbers: these touch the cell in a point and bound nothing.
+    #[test]
+    fn a_bolt_across_a_corner_is_no_neighbour() {
+        let mut plan = lattice(3, 4.0);
+        for site in &mut plan.sites {
+            site.at[0] *= 0.75;
+        }
+        let mut known: Vec<usize> = plan.view(4).others.iter().map(|(bolt, _)| *bolt).collect();
+        known.sort_unstable();
+        assert_eq!(known, [1, 3, 5, 7]);
+    }
 }

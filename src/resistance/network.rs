@@ -242,4 +242,43 @@ mod tests {
         };
         assert_eq!(rings.flow(&plates, &vec![0.0; conductance.len()]), None);
     }
+
+    // The network is linear: heat drawn out leaves below the coolant what heat put in leaves above it.
+    #[test]
+    fn heat_drawn_out_leaves_every_place_below_the_coolant() {
+        let (mut rings, conductance) = heated_in_the_middle();
+        // Even all over, so that the hottest place is every place of its face.
+        rings.columns.source_area = rings.columns.plate_area[0].clone();
+        let even = vec![2.0; conductance.len()];
+        let hottest = |flux: f64| {
+            let plates = Plates {
+                thickness: [0.4, 1.1],
+                conductivity: [2.0, 0.7],
+                inlet: Inlet::Flux(flux),
+                outlet: Outlet::Film(0.3),
+            };
+            rings.flow(&plates, &even).unwrap().hottest
+        };
+        // q (t1/k1 + 1/h + t2/k2 + 1/h_s).
+        let depth = 0.4 / 2.0 + 1.0 / 2.0 + 1.1 / 0.7 + 1.0 / 0.3;
+        for flux in [0.8, -0.8] {
+            // Rounding of sixty rings.
+            assert!((hottest(flux) / (flux * depth) - 1.0).abs() < 1e-10);
+        }
+    }
+
+    #[test]
+    fn rings_are_even_where_contact_reaches_the_rim() {
+        for contact in [4.0, 5.0, f64::INFINITY] {
+            let edges = edges(1.0, contact, 4.0, 12);
+            for (ring, edge) in edges.iter().enumerate() {
+                assert!((edge - 1.0 - 0.25 * ring as f64).abs() < 1e-14, "{edges:?}");
+            }
+        }
+        // Elsewhere a line stands at the edge of contact, half of the rings within.
+        let edges = edges(1.0, 2.5, 8.0, 12);
+        assert_eq!(edges.len(), 13);
+        assert!((edges[6] - 2.5).abs() < 1e-14 && (edges[12] - 8.0).abs() < 1e-13);
+        assert!(edges.windows(2).all(|pair| pair[0] < pair[1]));
+    }
 }

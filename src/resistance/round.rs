@@ -307,3 +307,6 @@ impl Problem {
         }
     }
 }
+
+#[cfg(test)]
+mod tests;

@@ -302,6 +302,86 @@ fn a_contact_over_the_edge_is_told_and_still_carries_its_force() {
     assert!((cells.force_carried(&[3000.0, 1000.0]) / 4000.0 - 1.0).abs() < 1e-12);
 }
 
+#[test]
+fn a_hole_without_a_bolt_bears_no_pressure() {
+    let mut plan = crowded(&[[0.02, 0.02]]);
+    plan.empty = vec![Hole {
+        at: [0.026, 0.02],
+        radius: [1e-3, 2e-3],
+    }];
+    let cells = cells(&plan).unwrap();
+    let at = |x: f64| cells.pressure_at([x, 0.02], &[3000.0]);
+    // The larger of both holes counts, up to its edge.
+    for x in [0.0241, 0.026, 0.0279] {
+        assert_eq!(at(x), None, "{x}");
+    }
+    for x in [0.0239, 0.0281] {
+        assert!(at(x).unwrap() >= 0.0, "{x}");
+    }
+    assert!(at(0.0239).unwrap() > 0.0);
+    let holes = PI * (2.25e-3_f64.powi(2) + 4e-6);
+    assert!((cells.interface_area / (0.05 * 0.04 - holes) - 1.0).abs() < 1e-12);
+}
+
+#[test]
+fn pressure_is_highest_at_the_edge_of_a_hole() {
+    let cells = cells(&crowded(&[[0.02, 0.02], [0.0265, 0.021]])).unwrap();
+    let forces = [3000.0, 5000.0];
+    let peak = cells.peak_pressure(&forces);
+    // Towards the first bolt, whose contact reaches here, the hole of the second is pressed hardest.
+    let to = [-6.5, -1.0].map(|part: f64| part / 43.25_f64.sqrt());
+    let edge = [0, 1].map(|axis| [0.0265, 0.021][axis] + to[axis] * 2.25e-3 * (1.0 + 1e-9));
+    let there = cells.pressure_at(edge, &forces).unwrap();
+    // Places stand 15 degrees apart, the nearest one 6.3 from this.
+    assert!(there > peak && there < 1.02 * peak, "{there} {peak}");
+    for row in 0..80 {
+        for column in 0..100 {
+            let point = [f64::from(column), f64::from(row)].map(|line| (line + 0.5) * 5.0 * STEP);
+            assert!(cells.pressure_at(point, &forces).unwrap_or(0.0) <= there);
+        }
+    }
+}
+
+#[test]
+fn an_isothermal_slab_tells_its_drop_per_watt() {
+    let mut plan = case_i();
+    plan.source = Source {
+        zone: Zone::Face,
+        isothermal: true,
+    };
+    let path = cells(&plan)
+        .unwrap()
+        .solve(&load(|_| 1000.0, &[5000.0; 4], &[0.0; 4]));
+    let area = 0.08 * 0.08 - 4.0 * PI * 2.75e-3_f64.powi(2);
+    let plates = 2.0 * 5e-3 / 167.0 / area;
+    let between = 1.0 / (1000.0 * area);
+    // Rounding of a hundred rings.
+    assert!((path.source_to_sink / (plates + between) - 1.0).abs() < 1e-9);
+    assert!((path.interface_drop / between - 1.0).abs() < 1e-9);
+    assert!((path.node_to_node / (0.5 * plates + between) - 1.0).abs() < 1e-9);
+}
+
+#[test]
+fn rings_begin_at_the_smaller_of_two_holes() {
+    let mut plan = round(DEFAULT_RINGS);
+    plan.sites[0].hole_radius = [3.125e-3, 2e-3];
+    let cells = cells(&plan).unwrap();
+    let edges = &cells.fine[0].edges;
+    assert!((edges[0] - 2e-3).abs() < 1e-15, "{}", edges[0]);
+    assert!(edges.windows(2).all(|pair| pair[0] < pair[1]));
+    for (plate, hole) in [3.125e-3, 2e-3].into_iter().enumerate() {
+        let areas = &cells.fine[0].rings.columns.plate_area[plate];
+        let rings: f64 = areas.iter().sum();
+        let exact = PI * (0.03_f64.powi(2) - f64::powi(hole, 2));
+        assert!((rings / exact - 1.0).abs() < 1e-9, "{plate}");
+    }
+    // Heat spreads into the plate below the larger hole, which helps it.
+    let wide = round(DEFAULT_RINGS);
+    let load = load(power_law, &[2000.0], &[0.0]);
+    let [wide, narrow] = [&wide, &plan].map(|plan| super::cells(plan).unwrap().solve(&load));
+    assert!(narrow.perfect_contact < wide.perfect_contact);
+}
+
 const STEP: f64 = 0.1e-3;
 
 proptest! {

@@ -2,7 +2,7 @@
 
 use std::{f64::consts::PI, sync::Arc};
 
-use super::{Cells, GRID, PlanGrid, within};
+use super::{Axis, Cells, GRID, Inlet, PlanGrid, within};
 use crate::{
     joint::{Sink, Zone},
     resistance::{
@@ -323,4 +323,55 @@ fn perfect_contact_serves_every_force() {
     assert!(perfect.serves(other.conductivity));
     assert!(!perfect.serves([167.0, 168.0]));
     assert_eq!(grid.solve_beside(&other, &perfect), grid.solve(&other));
+}
+
+#[test]
+fn lines_stand_at_every_edge() {
+    let mut plan = crowded(&CROWD);
+    let edges = |plan: &Plan, axis: usize, wanted: &[f64]| {
+        for fineness in [0.05, 1.0] {
+            let lines = Axis::new(plan, axis).lines(fineness);
+            assert!(lines.windows(2).all(|pair| pair[0] < pair[1]), "{lines:?}");
+            for edge in wanted {
+                let near = |line: &f64| (line - edge).abs() < 1e-12;
+                assert!(lines.iter().any(near), "{axis} {edge}: {lines:?}");
+            }
+        }
+    };
+    // A plate of 50 by 40 mm from the origin on a disc of 50 mm about (20, 25) mm.
+    edges(&plan, 0, &[-0.03, 0.0, 0.05, 0.07]);
+    edges(&plan, 1, &[-0.025, 0.0, 0.04, 0.075]);
+    plan.source.zone = Zone::Disc {
+        centre: [0.024, 0.017],
+        radius: 0.009,
+    };
+    edges(&plan, 0, &[-0.03, 0.0, 0.015, 0.033, 0.05, 0.07]);
+    edges(&plan, 1, &[-0.025, 0.0, 0.008, 0.026, 0.04, 0.075]);
+    plan.source.zone = Zone::Rectangle {
+        centre: [0.02, 0.01],
+        size: [0.01, 0.006],
+    };
+    edges(&plan, 0, &[0.015, 0.025]);
+    edges(&plan, 1, &[0.007, 0.013]);
+}
+
+// The network is linear: heat drawn out leaves below the coolant what heat put in leaves above it.
+#[test]
+fn heat_drawn_out_leaves_every_place_below_the_coolant() {
+    let mut plan = case_i();
+    plan.source.zone = Zone::Face;
+    let grid = plan_grid(&cells(&plan), 0.5);
+    let conductance = grid.conductance(&load(|_| 1000.0, &[5000.0; 4], &[0.0; 4]));
+    let hottest = |flux: f64| {
+        let mut plates = grid.cells.plates([167.0; 2]);
+        plates.inlet = Inlet::Flux(flux);
+        grid.flow(&plates, &conductance).unwrap().unwrap().hottest
+    };
+    // q (2t/k + 1/h + 1/h_s).
+    let depth = 2.0 * 5e-3 / 167.0 + 1.0 / 1000.0 + 1.0 / 2000.0;
+    for flux in [100.0, -100.0] {
+        // Sampled areas leave cells at holes 1e-3 off.
+        let off = hottest(flux) / (flux * depth) - 1.0;
+        assert!(off.abs() < 1e-3, "{off:+.2e}");
+    }
 }

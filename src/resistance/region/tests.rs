@@ -77,6 +77,60 @@ fn arcs_without_a_disc_lose_its_width() {
     assert!((left - 2.0 * TAU / 3.0).abs() < 1e-13);
 }
 
+#[test]
+fn the_farthest_point_is_a_corner_or_the_far_side_of_a_circle() {
+    let circle = |x: f64, radius: f64| Side::Circle {
+        centre: [x, 0.0],
+        radius,
+    };
+    let line = |normal: [f64; 2], offset: f64| Side::Line { normal, offset };
+    // The far side of a whole circle.
+    let whole = Region::new(&[circle(0.5, 1.0)]);
+    assert!((whole.farthest() - 1.5).abs() < 1e-14);
+    // Cut at x = 0.2 the circle about (0.5, 0) ends in corners at y = ±√(1 − 0.09).
+    let part = Region::new(&[circle(0.5, 1.0), line([1.0, 0.0], 0.2)]);
+    let corner = 0.2_f64.hypot(0.91_f64.sqrt());
+    assert!((part.farthest() - corner).abs() < 1e-14);
+    // On either side of y = x/2 + 0.3 the same corners, or the far side.
+    let normal = [-0.5, 1.0].map(|part: f64| part / 1.25_f64.sqrt());
+    let offset = 0.3 / 1.25_f64.sqrt();
+    // Where they meet: x² − x + 1/4 + (x/2 + 0.3)² = 1.
+    let (a, b, c) = (1.25, -0.7, 0.25 + 0.09 - 1.0);
+    let root = f64::sqrt(b * b - 4.0 * a * c);
+    let corners = [-1.0, 1.0].map(|sign| {
+        let x: f64 = (-b + sign * root) / (2.0 * a);
+        x.hypot(0.5 * x + 0.3)
+    });
+    let above = Region::new(&[circle(0.5, 1.0), line(normal.map(|part| -part), -offset)]);
+    assert!((above.farthest() - corners[0].max(corners[1])).abs() < 1e-13);
+    let below = Region::new(&[circle(0.5, 1.0), line(normal, offset)]);
+    assert!((below.farthest() - 1.5).abs() < 1e-13);
+    // A lens of unit circles about 0 and (1, 0): its points lie at (0.5, ±√0.75), its far side at 1.
+    let lens = Region::new(&[circle(0.0, 1.0), circle(1.0, 1.0)]);
+    assert!((lens.farthest() - 1.0).abs() < 1e-14);
+}
+
+#[test]
+fn a_region_holds_the_disc_that_touches_its_nearest_side() {
+    let circle = Side::Circle {
+        centre: [0.3, 0.4],
+        radius: 2.0,
+    };
+    let line = Side::Line {
+        normal: [0.0, 1.0],
+        offset: 1.7,
+    };
+    // 2 − 0.5 from the circle, 1.7 from the line.
+    for (sides, nearest) in [
+        (vec![circle], 1.5),
+        (vec![line], 1.7),
+        (vec![line, circle], 1.5),
+    ] {
+        let region = Region::new(&sides);
+        assert!(region.holds_disc(nearest - 1e-9) && !region.holds_disc(nearest + 1e-9));
+    }
+}
+
 const STEPS: u32 = 4000;
 
 proptest! {
