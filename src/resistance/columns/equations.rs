@@ -315,7 +315,7 @@ impl Equations {
             unknowns: self.operator.unknowns(),
         };
         let mut tolerance = self.tolerance;
-        let balanced = BALANCE * (self.tolerance / TOLERANCE).max(1.0);
+        let balanced = (BALANCE * (self.tolerance / TOLERANCE).max(1.0)).min(LOST);
         if self.multigrid.is_none() {
             self.find_mirror();
             self.guide()?;
