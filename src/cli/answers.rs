@@ -55,9 +55,8 @@ pub struct Answers<'a> {
 pub struct Found<'a> {
     /// The answer.
     pub answer: Box<dyn Answer + 'a>,
-    /// Whether the files asked for beside it were written; it is told even where they were not. They
-    /// come before it, so that none is lost where nobody reads the answer.
-    pub written: Result<(), Trouble>,
+    /// Why files asked for beside it were not written; it is told even so.
+    pub unwritten: Vec<Trouble>,
 }
 
 /// How a command reads one joint.
@@ -73,7 +72,7 @@ impl<'a> Answers<'a> {
         let out = match form.out {
             Some((folder, permit)) => Some(Results::new(
                 (folder, form.table),
-                &files,
+                (given, &files),
                 (permit, batch.part()),
             )?),
             None => None,
@@ -116,20 +115,21 @@ impl<'a> Answers<'a> {
             Err(refused) => {
                 let name = input::name(path);
                 let row = self.table.without(&name, Ended::Faulty, &refused.first());
-                self.put((index, &name), (&refused.json(), row), console)?;
+                self.put_failure(index, (&refused.json(), row), console);
                 return Err(refused.trouble());
             }
         };
         let name = &source.name;
         match find((&source, &joint), console) {
-            Ok(Found { answer, written }) => {
-                let outcome = match written {
-                    Ok(()) => answer.outcome(),
-                    Err(trouble) => {
-                        console.trouble(&trouble.of_file(name));
-                        Outcome::Failed
-                    }
+            Ok(Found { answer, unwritten }) => {
+                let outcome = if unwritten.is_empty() {
+                    answer.outcome()
+                } else {
+                    Outcome::Failed
                 };
+                for trouble in unwritten {
+                    console.trouble(&trouble.of_file(name));
+                }
                 if self.json || self.out.is_some() {
                     let mut object = answer.object();
                     object["file"] = name.as_str().into();
@@ -141,7 +141,7 @@ impl<'a> Answers<'a> {
                         Some(_) => self.table.of_file(name, ended, &answer.rows()),
                         None => String::new(),
                     };
-                    self.put((index, name), (&object, rows), console)?;
+                    self.put(index, (&object, rows), console)?;
                 } else {
                     console.result(&answer.text())?;
                 }
@@ -155,7 +155,7 @@ impl<'a> Answers<'a> {
                 };
                 let object = listing::unanswered(name, &message);
                 let row = self.table.without(name, ended, &message);
-                self.put((index, name), (&object, row), console)?;
+                self.put_failure(index, (&object, row), console);
                 Err(trouble.of_file(name))
             }
         }
@@ -164,15 +164,28 @@ impl<'a> Answers<'a> {
     /// Writes an object where results go to files, prints it where JSON is asked for.
     fn put(
         &self,
-        place: (usize, &str),
+        index: usize,
         (object, rows): (&serde_json::Value, String),
         console: &mut Console,
     ) -> Result<(), Trouble> {
         if let Some(out) = &self.out {
-            out.put(place, object, rows)?;
+            out.put(index, object, rows)?;
         } else if self.json {
             console.json(object, Layout::of_batch(self.given))?;
         }
         Ok(())
+    }
+
+    /// The same for a failure, which is told as a message besides.
+    fn put_failure(
+        &self,
+        index: usize,
+        (object, row): (&serde_json::Value, String),
+        console: &mut Console,
+    ) {
+        match self.put(index, (object, row), console) {
+            Err(lost) if !lost.is_closed_pipe() => console.trouble(&lost),
+            _ => {}
+        }
     }
 }

@@ -136,7 +136,8 @@ impl Read<'_> {
 impl Arrange {
     /// Searches every joint, prints the best, and tells by the exit code whether it was interrupted.
     pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
-        let permit = Permit::new(self.force, &self.files);
+        let read: Vec<PathBuf> = self.files.iter().chain(&self.resume).cloned().collect();
+        let permit = Permit::new(self.force, &read);
         let figure = Figure::asked(
             self.draw.as_deref(),
             self.files.len(),
@@ -147,6 +148,9 @@ impl Arrange {
             Some(folder) => Some(Layouts::new(folder, &self.files, permit)?),
             None => None,
         };
+        if figure.is_some() || layouts.is_some() || checkpoint.is_some() {
+            console.outlast_reader();
+        }
         let stop = stopped_by_keyboard()?;
         let form = Form {
             json: self.json,
@@ -163,6 +167,7 @@ impl Arrange {
                 }
                 let mut keeper = Keeper::new(checkpoint.clone(), self.batch.watch());
                 let answered = self.searched(read, (&stop, &mut keeper), console)?;
+                let kept = keeper.kept();
                 let drawn = figure
                     .as_ref()
                     .map_or(Ok(()), |figure| figure.write(&answered.plot(), console));
@@ -171,7 +176,10 @@ impl Arrange {
                 });
                 Ok(Found {
                     answer: Box::new(answered),
-                    written: keeper.kept().and(drawn).and(written),
+                    unwritten: [kept, drawn, written]
+                        .into_iter()
+                        .filter_map(Result::err)
+                        .collect(),
                 })
             },
         )

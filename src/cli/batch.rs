@@ -105,16 +105,20 @@ fn one_by_one(
         let done = work(index, path, console);
         match settled(done, console) {
             Ok(outcome) => outcomes.push(outcome),
-            Err(trouble) => return cut_short(outcomes, trouble),
+            Err(trouble) => return cut_short(outcomes, Outcome::Done, trouble),
         }
     }
     Ok(outcomes)
 }
 
-/// What the files before came to, where nobody reads any further.
-fn cut_short(mut outcomes: Vec<Outcome>, trouble: Trouble) -> Result<Vec<Outcome>, Trouble> {
+/// What the files came to up to the `last`, where nobody reads any further.
+fn cut_short(
+    mut outcomes: Vec<Outcome>,
+    last: Outcome,
+    trouble: Trouble,
+) -> Result<Vec<Outcome>, Trouble> {
     if trouble.is_closed_pipe() {
-        outcomes.push(Outcome::Done);
+        outcomes.push(last);
         Ok(outcomes)
     } else {
         Err(trouble)
@@ -180,12 +184,12 @@ fn at_once(
         for (index, told) in arriving {
             early.insert(index, told);
             while let Some((kept, outcome)) = early.remove(&outcomes.len()) {
-                let given = console.give_out(kept).map_err(Trouble::from);
-                match given.and(outcome) {
-                    Ok(outcome) => outcomes.push(outcome),
+                let outcome = outcome?;
+                match console.give_out(kept).map_err(Trouble::from) {
+                    Ok(()) => outcomes.push(outcome),
                     Err(trouble) => {
                         next.store(files.len(), Ordering::Relaxed);
-                        return cut_short(outcomes, trouble);
+                        return cut_short(outcomes, outcome, trouble);
                     }
                 }
             }

@@ -12,7 +12,7 @@ use crate::{
         self, BEYOND_CONE, Chain, Estimate, Failure, FieldMap, HeatMap, Options, RingRow,
         StackSection, TorqueSweep,
     },
-    figures::{self, Drawing, Format},
+    figures::{self, Drawing, FigureError, Format},
     joint::{Joint, Medium},
     pressure::elastic::Failure as Contact,
     report::csv::{self, Condition},
@@ -360,12 +360,17 @@ pub fn nearest(name: &str, known: &[String]) -> Option<String> {
 
 /// A drawing as a file of the format in a system of units.
 pub fn render(drawing: &Drawing, format: Format, units: System) -> Result<Vec<u8>, Trouble> {
-    figures::render_in(drawing, format, units).map_err(|fault| Trouble::Failure(fault.to_string()))
+    Ok(figures::render_in(drawing, format, units)?)
+}
+
+impl From<FigureError> for Trouble {
+    fn from(fault: FigureError) -> Self {
+        Self::Failure(fault.to_string())
+    }
 }
 
 /// A drawing as SVG for wide and for narrow screens.
-pub fn both_widths(drawing: &Drawing, units: System) -> Result<[String; 2], Trouble> {
-    let drawn = figures::svg_in(drawing, units)
-        .and_then(|wide| Ok([wide, figures::narrow_svg_in(drawing, units)?]));
-    drawn.map_err(|fault| Trouble::Failure(fault.to_string()))
+pub fn both_widths(drawing: &Drawing, units: System) -> Result<[String; 2], FigureError> {
+    let wide = figures::svg_in(drawing, units)?;
+    Ok([wide, figures::narrow_svg_in(drawing, units)?])
 }

@@ -79,6 +79,9 @@ impl Compare {
         let permit = Permit::new(self.force, &self.files);
         // Several joints are drawn on one sheet.
         let figure = Figure::asked(self.draw.as_deref(), 1, (permit, self.shown.system()))?;
+        if figure.is_some() {
+            console.outlast_reader();
+        }
         let choice = self.field.choice()?;
         let Some(entries) = self.entries(console)? else {
             return Ok(Outcome::Faulty);
@@ -90,7 +93,7 @@ impl Compare {
                     let files: Vec<String> =
                         self.files.iter().map(|path| input::name(path)).collect();
                     let object = listing::unanswered(&files.join(", "), why);
-                    console.json(&object, Layout::Indented)?;
+                    console.json_of_failure(&object, Layout::Indented);
                 }
                 return Err(trouble);
             }
@@ -157,7 +160,8 @@ impl Compare {
                 Err(refused) => {
                     sound = false;
                     if self.json {
-                        console.json(&refused.json(), Layout::of_batch(self.files.len()))?;
+                        console
+                            .json_of_failure(&refused.json(), Layout::of_batch(self.files.len()));
                     }
                     console.trouble(&refused.trouble());
                 }

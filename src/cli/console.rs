@@ -168,7 +168,11 @@ impl Trouble {
 
 /// Standard output for results, standard error for messages; colour is stripped where it does
 /// not belong.
-pub struct Console(To);
+pub struct Console {
+    to: To,
+    /// Whether work goes on where nobody reads the results any more.
+    outlasts: bool,
+}
 
 /// Where it goes.
 enum To {
@@ -194,7 +198,7 @@ impl Console {
     /// The console with the colour asked for.
     pub fn new(color: Color) -> Self {
         color.choice().write_global();
-        Self(To::Streams(Box::new(Streams {
+        Self::to(To::Streams(Box::new(Streams {
             results: AutoStream::auto(io::stdout()),
             messages: AutoStream::auto(io::stderr()),
         })))
@@ -202,37 +206,55 @@ impl Console {
 
     /// A console that keeps all it is given, for work that goes on beside other work.
     pub fn kept() -> Self {
-        Self(To::Kept(Vec::new()))
+        Self::to(To::Kept(Vec::new()))
+    }
+
+    fn to(to: To) -> Self {
+        let outlasts = false;
+        Self { to, outlasts }
+    }
+
+    /// From now on results that nobody reads are dropped, because files are owed besides.
+    pub fn outlast_reader(&mut self) {
+        self.outlasts = true;
     }
 
     /// All that was kept, for tests.
     #[cfg(test)]
     pub fn texts(self) -> String {
-        match self.0 {
+        match self.to {
             To::Kept(texts) => texts.into_iter().map(|(_, text)| text).collect(),
             To::Streams(_) => String::new(),
         }
     }
 
-    /// Gives out what another console has kept, in its order.
+    /// Gives out what another console has kept, in its order; messages also where results find no way.
     pub fn give_out(&mut self, kept: Self) -> io::Result<()> {
-        if let To::Kept(texts) = kept.0 {
+        let mut given = Ok(());
+        if let To::Kept(texts) = kept.to {
             for (stream, text) in texts {
                 match stream {
-                    Stream::Result => self.result(&text)?,
+                    Stream::Result if given.is_ok() => given = self.result(&text),
+                    Stream::Result => {}
                     Stream::Message => self.message(&text),
                 }
             }
         }
-        Ok(())
+        given
     }
 
     /// Writes a result.
     pub fn result(&mut self, text: &str) -> io::Result<()> {
-        match &mut self.0 {
+        match &mut self.to {
             To::Streams(streams) => {
-                streams.results.write_all(text.as_bytes())?;
-                streams.results.flush()
+                let results = &mut streams.results;
+                let written = results.write_all(text.as_bytes());
+                match written.and_then(|()| results.flush()) {
+                    Err(fault) if self.outlasts && fault.kind() == io::ErrorKind::BrokenPipe => {
+                        Ok(())
+                    }
+                    written => written,
+                }
             }
             To::Kept(texts) => {
                 texts.push((Stream::Result, text.to_owned()));
@@ -250,9 +272,18 @@ impl Console {
         self.result(&text)
     }
 
+    /// Writes a JSON value that tells a failure, which is told as a message besides; where it finds no way,
+    /// that is told too.
+    pub fn json_of_failure(&mut self, value: &serde_json::Value, layout: Layout) {
+        match self.json(value, layout).map_err(Trouble::from) {
+            Err(lost) if !lost.is_closed_pipe() => self.trouble(&lost),
+            _ => {}
+        }
+    }
+
     /// Writes a message. When nobody can read it any more there is nobody left to tell.
     pub fn message(&mut self, text: &str) {
-        match &mut self.0 {
+        match &mut self.to {
             To::Streams(streams) => {
                 let _ = streams.messages.write_all(text.as_bytes());
                 let _ = streams.messages.flush();

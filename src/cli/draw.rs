@@ -87,7 +87,7 @@ impl Draw {
         let files = self.batch.files(&self.files);
         input::stdin_at_most_once(&files)?;
         let folders: Vec<PathBuf> = if self.files.len() > 1 {
-            results::apart(&files, "")?;
+            results::apart(&self.files, "")?;
             let folder = |path: &PathBuf| self.out.join(results::stem(path));
             files.iter().map(folder).collect()
         } else {

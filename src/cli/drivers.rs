@@ -123,6 +123,9 @@ impl Drivers {
         let units = self.shown.system();
         let permit = Permit::new(self.force, &self.files);
         let figure = Figure::asked(self.draw.as_deref(), self.files.len(), (permit, units))?;
+        if figure.is_some() {
+            console.outlast_reader();
+        }
         let form = Form {
             json: self.json,
             table: &csv::DRIVERS,
@@ -137,7 +140,8 @@ impl Drivers {
                     figure.write(&Drawing::Tornado(Box::new(found.clone())), console)
                 });
                 let answer = Box::new(Told { found, units });
-                Ok(Found { answer, written })
+                let unwritten = written.err().into_iter().collect();
+                Ok(Found { answer, unwritten })
             },
         )
     }

@@ -109,6 +109,9 @@ impl Estimate {
             out: self.out.as_deref().map(|folder| (folder, permit)),
         };
         let nodes = self.nodes_target(permit)?;
+        if nodes.is_some() {
+            console.outlast_reader();
+        }
         let variant = self.variant.as_deref();
         Answers::new(&self.batch, &self.files, &form)?.run(
             console,
@@ -126,7 +129,8 @@ impl Estimate {
                     found,
                     joint: joint.clone(),
                 });
-                Ok(Found { answer, written })
+                let unwritten = written.err().into_iter().collect();
+                Ok(Found { answer, unwritten })
             },
         )
     }

@@ -215,14 +215,13 @@ impl Fit {
             ));
         }
         let blocks = self.blocks(named, &tables, permit)?;
+        if figure.is_some() || !blocks.is_empty() {
+            console.outlast_reader();
+        }
         self.batch.run(&tables, console, &|index, path, console| {
             if several && !self.json {
                 let gap = if index > 0 { "\n" } else { "" };
-                let headed = console.result(&format!("{gap}{}:\n", input::name(path)));
-                // A block is owed also where nobody reads.
-                if blocks.is_empty() {
-                    headed?;
-                }
+                console.result(&format!("{gap}{}:\n", input::name(path)))?;
             }
             let done = match &self.unknown {
                 None => self.law(path, (blocks.get(index), figure.as_ref()), console),
@@ -234,7 +233,7 @@ impl Fit {
             if let (true, Some(why)) = (self.json, done.as_ref().err().and_then(Trouble::sentence))
             {
                 let object = listing::unanswered(&input::name(path), why);
-                console.json(&object, self.layout())?;
+                console.json_of_failure(&object, self.layout());
             }
             done
         })
@@ -335,25 +334,21 @@ impl Fit {
             console.wrote(&target.path);
             Ok(())
         });
-        let outcome = self.outcome(&series.cautions, drawn.and(kept), console);
-        let told = if self.json {
+        let outcome = self.outcome(&series.cautions, [drawn, kept], console);
+        if self.json {
             console.json(
                 &fit::series_json(&series, (&source.name, &block)),
                 self.layout(),
-            )
+            )?;
         } else {
             let mut text =
                 text::painted(&fit::series_in(&series, &source.name, self.shown.system()));
             if out.is_none() {
                 let _ = write!(text, "\n{block}");
             }
-            console.result(&text)
-        };
-        match told.map_err(Trouble::from) {
-            // The block was asked for, and the next ones are.
-            Err(trouble) if out.is_some() && trouble.is_closed_pipe() => Ok(outcome),
-            told => told.map(|()| outcome),
+            console.result(&text)?;
         }
+        Ok(outcome)
     }
 
     fn unknown(
@@ -372,7 +367,7 @@ impl Fit {
             Ok(read) => read,
             Err(refused) => {
                 if self.json {
-                    console.json(&refused.json(), self.layout())?;
+                    console.json_of_failure(&refused.json(), self.layout());
                 }
                 if let Err(unread) = points {
                     console.trouble(&unread);
@@ -408,7 +403,17 @@ impl Fit {
         };
         let answer = unknown::fit(&bench, &question, &readings);
         bench.watch.tell("");
-        let answer = answer?;
+        let answer = match answer {
+            Ok(answer) => answer,
+            Err(failure) => {
+                if let (true, unknown::Failure::Refused(_)) = (self.json, &failure) {
+                    let why = "the joint is refused at a value of the unknown that is tried";
+                    let object = listing::unanswered(&source.name, why);
+                    console.json_of_failure(&object, self.layout());
+                }
+                return Err(failure.into());
+            }
+        };
         let drawn = figure.map_or(Ok(()), |figure| {
             let plot = ProfilePlot {
                 asked: question.clone(),
@@ -416,7 +421,7 @@ impl Fit {
             };
             figure.write(&Drawing::Profile(Box::new(plot)), console)
         });
-        let outcome = self.outcome(&answer.cautions, drawn, console);
+        let outcome = self.outcome(&answer.cautions, [drawn], console);
         self.tell((&question, &answer), &source, console)?;
         Ok(outcome)
     }
@@ -451,7 +456,7 @@ impl Fit {
             Ok(all) => all,
             Err(faults) => {
                 if as_json {
-                    console.json(&refused_json(&source, &faults), self.layout())?;
+                    console.json_of_failure(&refused_json(&source, &faults), self.layout());
                 }
                 return Err(refused(&source, &faults));
             }
@@ -481,15 +486,18 @@ impl Fit {
     }
 
     /// How a fit ends, which is told even where a file of it could not be written.
-    fn outcome(
+    fn outcome<const N: usize>(
         &self,
         cautions: &[Caution],
-        written: Result<(), Trouble>,
+        written: [Result<(), Trouble>; N],
         console: &mut Console,
     ) -> Outcome {
-        if let Err(trouble) = written {
-            console.trouble(&trouble);
-            return trouble.outcome();
+        let unwritten: Vec<Trouble> = written.into_iter().filter_map(Result::err).collect();
+        for trouble in &unwritten {
+            console.trouble(trouble);
+        }
+        if !unwritten.is_empty() {
+            return Outcome::Failed;
         }
         let speaks = |caution: &Caution| gravity(caution.code) != Gravity::Standing;
         if self.strict && cautions.iter().any(speaks) {

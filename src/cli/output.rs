@@ -1,4 +1,5 @@
-//! Files written whole or not at all, and never over another without being told to.
+//! Files written whole or not at all, never over another without being told to, and never over one that
+//! the command line names as input.
 //!
 //! A file is written under a temporary name in the folder it belongs to and then renamed. Where
 //! the target is a symbolic link, the file it points to is replaced and the link stays.
@@ -19,7 +20,8 @@ pub enum Existing {
     Replace,
 }
 
-/// Which files a command may write: none that exists unless told to, and never one that it reads.
+/// Which files a command may write: none that exists unless told to, and never one that it is told to
+/// read; tables that a joint file names are not known here.
 #[derive(Clone, Copy, Debug)]
 pub struct Permit<'a> {
     existing: Existing,
@@ -42,8 +44,11 @@ impl<'a> Permit<'a> {
     /// A file that may be written, checked before anything is computed.
     pub fn target(self, path: &Path) -> Result<Target, Trouble> {
         let real = |path: &Path| fs::canonicalize(path).ok();
+        // `-` is standard input, not a file of that name.
         let written = real(path);
-        let read = |input: &&PathBuf| written.is_some() && real(input) == written;
+        let read = |input: &&PathBuf| {
+            input.as_path() != Path::new("-") && written.is_some() && real(input) == written
+        };
         if let Some(input) = self.inputs.iter().find(read) {
             return Err(Trouble::usage(
                 format!(

@@ -15,7 +15,7 @@ use crate::{
         results::{self, stem},
         shown::Shown,
     },
-    figures::Drawing,
+    figures::{Drawing, FigureError},
     joint::{self, Joint, Version},
     report::page::{self, Contents, Fields, Figure, Figures},
     units::System,
@@ -109,7 +109,7 @@ impl Report {
             }
             return Ok(vec![permit.target(&self.out)?]);
         }
-        results::apart(files, ".html")?;
+        results::apart(&self.files, ".html")?;
         if self.out.is_file() || (!self.out.is_dir() && results::ends_like_a_file(&self.out)) {
             return Err(Trouble::usage(
                 format!("`{}` does not end in .html", self.out.display()),
@@ -280,7 +280,7 @@ fn figures(
     (entries, found): (&[Entry], &Handed),
     units: System,
 ) -> Result<(Figures, Vec<String>), Trouble> {
-    let drawn = |drawing: &Drawing, caption: &str, plan: bool| -> Result<Figure, Trouble> {
+    let drawn = |drawing: &Drawing, caption: &str, plan: bool| -> Result<Figure, FigureError> {
         let [svg, narrow] = chain::both_widths(drawing, units)?;
         Ok(Figure {
             svg,
@@ -329,9 +329,11 @@ fn figures(
         );
         match drawn {
             Ok(figure) => all.comparison = figure,
-            // Too many to draw; the table tells them all.
-            Err(Trouble::Failure(why)) => undrawn.push(format!("Figure of the variants: {why}.")),
-            Err(trouble) => return Err(trouble),
+            Err(FigureError::TooLong(_)) => undrawn.push(
+                "Figure of the variants: they are too many for one; the table tells them all."
+                    .to_owned(),
+            ),
+            Err(fault) => return Err(fault.into()),
         }
     }
     Ok((all, undrawn))

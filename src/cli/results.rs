@@ -7,7 +7,7 @@ use crate::{
         input,
         output::{Permit, Target},
     },
-    report::csv::{Ended, Table},
+    report::csv::Table,
 };
 use std::{
     collections::BTreeMap,
@@ -33,13 +33,13 @@ struct Row {
 }
 
 impl Results {
-    /// The files to write; the folder is made where there is none.
+    /// The files to write for those of `given` that are this part's; the folder is made where there is none.
     pub fn new(
         (folder, columns): (&Path, &'static Table),
-        files: &[PathBuf],
+        (given, files): (&[PathBuf], &[PathBuf]),
         (permit, part): (Permit, Option<Shard>),
     ) -> Result<Self, Trouble> {
-        apart(files, ".json")?;
+        apart(given, ".json")?;
         make(folder)?;
         let name = columns.name;
         let table = match part {
@@ -57,19 +57,14 @@ impl Results {
         })
     }
 
-    /// Writes the result of one file, and keeps its lines of the table; where the result cannot be
-    /// written, the table tells that instead.
+    /// Writes the result of one file, and keeps its lines of the table, also where it cannot be written.
     pub fn put(
         &self,
-        (index, file): (usize, &str),
+        index: usize,
         object: &serde_json::Value,
         lines: String,
     ) -> Result<(), Trouble> {
         let written = self.targets[index].write(format!("{object:#}\n").as_bytes());
-        let lines = match &written {
-            Err(Trouble::Failure(why)) => self.columns.without(file, Ended::Failed, why),
-            _ => lines,
-        };
         let row = Row {
             lines,
             written: written.is_ok(),

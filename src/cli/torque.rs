@@ -100,6 +100,9 @@ impl Torque {
                 "--draw FIGURE draws the curve",
             ));
         }
+        if figure.is_some() {
+            console.outlast_reader();
+        }
         let form = Form {
             json: self.json,
             table: &csv::TORQUES,
@@ -114,7 +117,8 @@ impl Torque {
                     figure.write(&Drawing::Torque(Box::new(found.clone())), console)
                 });
                 let answer = Box::new(Told { found, units });
-                Ok(Found { answer, written })
+                let unwritten = written.err().into_iter().collect();
+                Ok(Found { answer, unwritten })
             },
         )
     }

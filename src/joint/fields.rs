@@ -225,7 +225,10 @@ impl Kind {
             Self::SpreadOr(catalogue) => {
                 format!("a number, a range of them or {}", catalogue.expects())
             }
-            Self::PerPlate(measure) => format!("{}, or one per plate", measure.expects()),
+            Self::PerPlate(measure) => format!(
+                "{}, one per plate, or a table by plate name",
+                measure.expects()
+            ),
             Self::Names => "two names, `[\"base\", \"shim\"]`".into(),
             Self::Point => "two lengths, `[\"80 mm\", \"60 mm\"]`".into(),
             Self::Points => "a list of points, `[[\"10 mm\", \"10 mm\"], …]`".into(),

@@ -362,7 +362,7 @@ pub static CONTACT: Section = Section {
         field(
             "emissivity",
             Kind::PerPlate(Measure::Number),
-            "hemispherical emissivity of the faces",
+            "hemispherical emissivity of the faces: of all plates, as a list of one for each or by plate name, `\"*\"` for the others",
             "0.1",
         )
         .within(0.001, 1.0)

@@ -30,7 +30,8 @@ pub fn comparison_in(found: &Comparison, units: System) -> String {
         verdicts(found),
         notes(found),
     ];
-    let names: Vec<String> = found.joints.iter().map(name).collect();
+    let whole = found.joints.iter().map(|joint| plain(&joint.name));
+    let names: Vec<String> = found.joints.iter().map(name).chain(whole).collect();
     told_around(&parts.join("\n"), (units, &names))
 }
 

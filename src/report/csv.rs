@@ -45,6 +45,10 @@ impl Table {
     /// so.
     pub fn of_file(&self, file: &str, ended: Ended, rows: &[Vec<String>]) -> String {
         if rows.is_empty() {
+            let ended = match ended {
+                Ended::Done => Ended::Empty,
+                other => other,
+            };
             return self.without(file, ended, "nothing was found");
         }
         let first = [file.to_owned(), ended.word().to_owned(), String::new()];
@@ -97,6 +101,8 @@ pub const ESTIMATES: Table = Table {
 pub enum Ended {
     /// With an answer.
     Done,
+    /// With an answer that has no line.
+    Empty,
     /// Stopped by the user, with what was found so far.
     Interrupted,
     /// The file is at fault.
@@ -109,6 +115,7 @@ impl Ended {
     fn word(self) -> &'static str {
         match self {
             Self::Done => "done",
+            Self::Empty => "empty",
             Self::Interrupted => "interrupted",
             Self::Faulty => "faulty",
             Self::Failed => "failed",

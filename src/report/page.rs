@@ -103,7 +103,7 @@ pub struct Contents<'a> {
     pub comparison: Option<&'a Comparison>,
     /// Units of tables, sentences and values under the pointer; drawings are told in them already.
     pub units: System,
-    /// What could not be computed, and why, a sentence each.
+    /// What could not be computed or drawn, and why, a sentence each.
     pub left_out: &'a [String],
 }
 

@@ -225,15 +225,31 @@ impl System {
     /// The same with names that users gave, which stand as they are: a `6 mm carrier` stays one.
     pub fn restated_around(self, text: &str, names: &[String]) -> String {
         let changed = |name: &&String| self.restated(name) != **name;
-        let Some(name) = names.iter().find(changed) else {
-            return self.restated(text);
+        let mut names: Vec<&String> = names.iter().filter(changed).collect();
+        // A name within a longer one is part of that.
+        names.sort_by_key(|name| std::cmp::Reverse(name.len()));
+        let mut told = String::new();
+        let mut rest = text;
+        let alone = |letter: Option<char>| {
+            letter.is_none_or(|letter| !letter.is_alphanumeric() && !".,-−".contains(letter))
         };
-        let others: Vec<String> = names.iter().filter(|each| *each != name).cloned().collect();
-        let parts = text.split(name.as_str());
-        let parts: Vec<String> = parts
-            .map(|part| self.restated_around(part, &others))
-            .collect();
-        parts.join(name)
+        'text: loop {
+            for (at, _) in rest.char_indices() {
+                let before = rest[..at].chars().next_back().or(told.chars().next_back());
+                let found = names.iter().find(|name| {
+                    let after = rest[at..].strip_prefix(name.as_str());
+                    after.is_some_and(|after| alone(before) && alone(after.chars().next()))
+                });
+                if let Some(name) = found {
+                    told.push_str(&self.restated(&rest[..at]));
+                    told.push_str(name);
+                    rest = &rest[at + name.len()..];
+                    continue 'text;
+                }
+            }
+            told.push_str(&self.restated(rest));
+            return told;
+        }
     }
 
     /// Tells a group of numbers in the unit of the largest; the symbol of that unit.
@@ -377,8 +393,13 @@ mod tests {
         let names = ["6 mm carrier", "lid", "2 mm"].map(str::to_owned);
         let told = |text| System::Inch.restated_around(text, &names);
         assert_eq!(
-            told("6 mm carrier: gap 25.4 µm; lid 50.8 mm, 2 mm"),
-            "6 mm carrier: gap 1.00 mil; lid 2.00 in, 2 mm"
+            told("6 mm carrier: gap 25.4 µm; lid 50.8 mm (2 mm)"),
+            "6 mm carrier: gap 1.00 mil; lid 2.00 in (2 mm)"
+        );
+        // A number that ends like a name is no name.
+        assert_eq!(
+            told("12 mm of 16 mm carriers"),
+            "0.47 in of 0.63 in carriers"
         );
     }
 

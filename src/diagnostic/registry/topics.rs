@@ -191,7 +191,8 @@ pub(super) const ENTRIES: &[Entry] = &[
             "Commands take many files. `--jobs N` takes N cores, each for a joint of its own; results come in \
              the order given and with the same digits. `--out DIR` writes one JSON per joint and one table \
              (estimates.csv, torques.csv, drivers.csv, layouts.csv), of `draw` one folder per joint. A bad file \
-             stops nothing and makes the exit code 1.\
+             stops nothing and makes the exit code 1; its line of the table says `faulty`, `failed`, `interrupted` \
+             or, where nothing was found, `empty`.\
              \n\n\
              `--shard K/N` takes every N-th file of the sorted paths, for a part of a batch on each machine: \
              `ringsum estimate joints/*.toml --out results --shard $SLURM_ARRAY_TASK_ID/$SLURM_ARRAY_TASK_COUNT`. \
@@ -234,8 +235,8 @@ pub(super) const ENTRIES: &[Entry] = &[
         "topic/outputs",
         "Files that are written",
         [
-            "A file appears whole or not at all, never over another without `--force` and never over one that is \
-             read: it is written as `.ringsum-…` in the folder it belongs to and then renamed. Every target is checked before anything \
+            "A file appears whole or not at all, never over another without `--force` and never over one that the \
+             command line names as input: it is written as `.ringsum-…` in the folder it belongs to and then renamed. Every target is checked before anything \
              is computed, but for those of `arrange --write`, which the search names.",
             "A file that fails leaves nothing of itself behind; those written before it stay, and the answer is told all \
              the same, with exit code 1. A process that is stopped in the very moment of writing (Ctrl-C, kill -9, power) cannot clean up: delete the `.ringsum-…` file it may leave, nothing reads it.",
