@@ -194,6 +194,8 @@ fn every_caution_of_a_law_is_produced() {
     assert!(codes(&table(&bent, 1.6), Form::Law).contains(&"fit/curved"));
     let falling = |p: f64| 5000.0 / p;
     assert!(codes(&table(&falling, 1.6), Form::Law).contains(&"fit/falling"));
+    let flat = |p: f64| 5000.0 * p.powf(0.001);
+    assert!(codes(&table(&flat, 1.6), Form::Law).contains(&"fit/hardly-rising"));
     assert!(codes(&table(&falling, 1.6), Form::Table).contains(&"fit/levelled"));
     let apart = |p: f64| power(p) * if (p - 7.0).abs() < 0.1 { 1.4 } else { 1.0 };
     assert!(codes(&table(&apart, 1.6), Form::Law).contains(&"fit/outlier"));

@@ -12,6 +12,7 @@ use crate::{
 };
 use clap::Args;
 use std::{
+    cell::RefCell,
     fmt::Write,
     path::{Path, PathBuf},
 };
@@ -131,7 +132,7 @@ pub fn read_variant(
     (sets, variant): (&[String], Option<&str>),
     console: &mut Console,
 ) -> Result<(Source, Joint), Refused> {
-    let source = text(path, console)?;
+    let mut source = text(path, console)?;
     let names = joint::variant_names(&source.text);
     let place = match variant {
         None => {
@@ -153,11 +154,16 @@ pub fn read_variant(
         ),
     };
     let folder = input::folder(path);
+    let tables = RefCell::new(Vec::new());
     let read = joint::read_version(&source.text, (sets, place), &|name| {
+        tables.borrow_mut().push(folder.join(name));
         input::table(&folder, name)
     });
     match read {
-        Ok(joint) => Ok((source, joint)),
+        Ok(joint) => {
+            source.tables = tables.into_inner();
+            Ok((source, joint))
+        }
         Err(faults) => Err(Refused::of(source, faults, (&folder, sets))),
     }
 }

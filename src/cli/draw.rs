@@ -99,7 +99,7 @@ impl Draw {
         self.batch.run(&files, console, &|index, path, console| {
             let (source, joint) =
                 check::read(path, &self.sets, console).map_err(|refused| refused.trouble())?;
-            self.drawn(&joint, &folders[index], console)
+            self.drawn((&joint, &source.tables), &folders[index], console)
                 .map_err(|trouble| trouble.of_file(&source.name))?;
             Ok(Outcome::Done)
         })
@@ -120,7 +120,12 @@ impl Draw {
     }
 
     /// Draws the figures of one joint into its folder, and tells each as it is written.
-    fn drawn(&self, joint: &Joint, folder: &Path, console: &mut Console) -> Result<(), Trouble> {
+    fn drawn(
+        &self,
+        (joint, tables): (&Joint, &[PathBuf]),
+        folder: &Path,
+        console: &mut Console,
+    ) -> Result<(), Trouble> {
         let task = Task {
             joint,
             choice: self.field.choice()?,
@@ -130,7 +135,7 @@ impl Draw {
         if self.maps && folder.exists() {
             // A table that is to be kept is found before anything is solved.
             for name in chain::map_names(joint) {
-                self.permit().target(&folder.join(name))?;
+                self.permit().target(&folder.join(name))?.apart(tables)?;
             }
         }
         let fields = chain::fields(&task, interface, COLUMNS)?;

@@ -4,7 +4,7 @@ use crate::{
     cli::{
         answers::{Answer, Answers, Form, Found},
         batch::Batch,
-        chain::{self, Beside, Estimated, Rings, Task},
+        chain::{self, Beside, Choice, Estimated, Rings, Task},
         check,
         console::{Console, Outcome, Trouble},
         draws::Draws,
@@ -116,7 +116,10 @@ impl Estimate {
         Answers::new(&self.batch, &self.files, &form)?.run(
             console,
             &|path, console| check::read_variant(path, (&self.sets, variant), console),
-            &|(_, joint), console| {
+            &|(source, joint), console| {
+                nodes
+                    .as_ref()
+                    .map_or(Ok(()), |target| target.apart(&source.tables))?;
                 let found = self.found(joint)?;
                 let written = nodes.as_ref().map_or(Ok(()), |target| {
                     let table = csv::nodes(&found.estimate).map_err(Trouble::Failure)?;
@@ -147,6 +150,12 @@ impl Estimate {
                     self.files.len()
                 ),
                 "write them one by one, or leave --nodes out",
+            ));
+        }
+        if matches!(self.field.choice()?, Choice::Cone) {
+            return Err(Trouble::usage(
+                "the closed form solves no means of the plates, so that it has no nodes",
+                "leave out --field cone",
             ));
         }
         Ok(Some(permit.target(path)?))

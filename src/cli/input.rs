@@ -27,6 +27,8 @@ pub struct Source {
     pub text: String,
     /// The folder of the tables that it names.
     pub folder: PathBuf,
+    /// The tables that were read because it names them.
+    pub tables: Vec<PathBuf>,
 }
 
 /// How messages call a path.
@@ -97,6 +99,7 @@ pub fn read(path: &Path) -> Result<Source, Fault> {
         name,
         text,
         folder: folder(path),
+        tables: Vec::new(),
     })
 }
 
@@ -187,6 +190,7 @@ pub fn points(path: &Path) -> Result<Source, Trouble> {
             name,
             text,
             folder: folder(path),
+            tables: Vec::new(),
         }),
         Err(why) => Err(Trouble::usage(
             format!("`{name}` cannot be read: {why}"),

@@ -21,7 +21,7 @@ pub enum Existing {
 }
 
 /// Which files a command may write: none that exists unless told to, and never one that it is told to
-/// read; tables that a joint file names are not known here.
+/// read; [`Target::apart`] tells tables that a joint file names apart.
 #[derive(Clone, Copy, Debug)]
 pub struct Permit<'a> {
     existing: Existing,
@@ -43,23 +43,29 @@ impl<'a> Permit<'a> {
 
     /// A file that may be written, checked before anything is computed.
     pub fn target(self, path: &Path) -> Result<Target, Trouble> {
-        let real = |path: &Path| fs::canonicalize(path).ok();
-        // `-` is standard input, not a file of that name.
-        let written = real(path);
-        let read = |input: &&PathBuf| {
-            input.as_path() != Path::new("-") && written.is_some() && real(input) == written
-        };
-        if let Some(input) = self.inputs.iter().find(read) {
-            return Err(Trouble::usage(
-                format!(
-                    "`{}` would be written over `{}`, which is read",
-                    path.display(),
-                    input.display()
-                ),
-                "name another file; what is read is never replaced, not with --force either",
-            ));
-        }
+        apart(path, self.inputs)?;
         Target::new(path, self.existing)
+    }
+}
+
+/// Refuses a path that is one of the files that are read.
+fn apart(path: &Path, inputs: &[PathBuf]) -> Result<(), Trouble> {
+    let real = |path: &Path| fs::canonicalize(path).ok();
+    let written = real(path);
+    // `-` is standard input, not a file of that name.
+    let read = |input: &&PathBuf| {
+        input.as_path() != Path::new("-") && written.is_some() && real(input) == written
+    };
+    match inputs.iter().find(read) {
+        None => Ok(()),
+        Some(input) => Err(Trouble::usage(
+            format!(
+                "`{}` would be written over `{}`, which is read",
+                path.display(),
+                input.display()
+            ),
+            "name another file; what is read is never replaced, not with --force either",
+        )),
     }
 }
 
@@ -130,6 +136,11 @@ impl Target {
             ));
         }
         Ok(target(real))
+    }
+
+    /// Refuses to be one of the tables that a joint file names, which are known once it is read.
+    pub fn apart(&self, tables: &[PathBuf]) -> Result<(), Trouble> {
+        apart(&self.path, tables)
     }
 
     /// Writes the file whole.

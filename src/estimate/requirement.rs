@@ -1,7 +1,7 @@
 //! A requirement and how the joint stands to it, whichever way its faces are bent.
 
 use crate::{
-    estimate::Bend,
+    estimate::{Bend, Estimate},
     joint::{Limit, RequirementKind},
 };
 
@@ -69,5 +69,20 @@ impl Bent {
             Limit::Least => least,
         };
         noticeable.then_some(worst.0)
+    }
+}
+
+impl Estimate {
+    /// What lets the joint down whatever the heat says: a limit of strength, or scatter that may leave no
+    /// clamp force.
+    pub fn met_of_heat_alone(&self) -> Option<&'static str> {
+        let says = |code| self.cautions.iter().any(|caution| caution.code == code);
+        if says("preload/never-for-conductance") {
+            Some("a limit of strength does not hold")
+        } else if says("preload/negative-service-force") {
+            Some("the least clamp force leaves the joint open")
+        } else {
+            None
+        }
     }
 }

@@ -478,13 +478,6 @@ impl Estimate {
             .any(|caution| caution.code == FLATNESS_DECIDES)
     }
 
-    /// Whether a limit of strength is passed, whatever the heat says.
-    pub fn beyond_strength(&self) -> bool {
-        self.cautions
-            .iter()
-            .any(|caution| caution.code == "preload/never-for-conductance")
-    }
-
     /// Whether a caution speaks of this joint, beyond the duties of care that go with every one.
     pub fn has_cautions(&self) -> bool {
         self.cautions

@@ -132,7 +132,38 @@ fn what_is_read_is_never_written_over() {
         let arguments: Vec<&str> = arguments.split(' ').collect();
         refused(&folder, &arguments, &[]);
     }
+    refused(
+        &folder,
+        &[
+            "estimate",
+            "joint.toml",
+            "--field",
+            "cone",
+            "--nodes",
+            "n.csv",
+        ],
+        &["has no nodes"],
+    );
     let read = |name: &str| fs::read_to_string(folder.path().join(name)).expect("it is there");
+    // A table that the joint file names.
+    let text = include_str!("../../joints/bowed_base.toml");
+    let map = include_str!("../../joints/bowed_base_flatness.csv");
+    fs::write(folder.path().join("bowed.toml"), text).expect("the test can do this");
+    fs::write(folder.path().join("bowed_base_flatness.csv"), map).expect("the test can do this");
+    refused(
+        &folder,
+        &[
+            "estimate",
+            "bowed.toml",
+            "--nodes",
+            "bowed_base_flatness.csv",
+            "--force",
+        ],
+        &["which is read"],
+    );
+    assert_eq!(read("bowed_base_flatness.csv"), map);
+    fs::remove_file(folder.path().join("bowed.toml")).expect("the test can do this");
+    fs::remove_file(folder.path().join("bowed_base_flatness.csv")).expect("the test can do this");
     assert_eq!(read("points.csv"), POINTS);
     assert_eq!(read("joint.toml"), COUPON);
     assert_eq!(

@@ -137,6 +137,18 @@ pub(super) const ENTRIES: &[Entry] = &[
             "Check the columns and the order of the readings. Do not use the law.",
         ],
     ),
+    Range.entry(
+        "fit/hardly-rising",
+        "The conductance hardly follows the load",
+        [
+            "The exponent may be zero within its 90 % interval. Bare faces conduct with about the 0.95th power of \
+             the pressure, films and soft fillers with less; readings from heater to sink, or between sensors in the \
+             plates, hold what the plates resist and hardly move. A block is taken as what the faces \
+             conduct alone: made of such readings it counts the plates twice.",
+            "Hold such readings against the whole joint: `ringsum fit joint.toml points.csv --unknown roughness`. \
+             Take the block where the readings are of the faces alone, and measure over a wider range of loads.",
+        ],
+    ),
     Note.entry(
         "fit/levelled",
         "Rows of a table were put level",

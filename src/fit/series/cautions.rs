@@ -125,6 +125,14 @@ fn of_law(law: &PowerLaw, named: &str, found: &mut Vec<Caution>) {
                 law.exponent
             ),
         ));
+    } else if law.exponent - slope <= 0.0 {
+        found.push(caution(
+            "fit/hardly-rising",
+            format!(
+                "{named}the readings hardly follow the load (exponent {:.2} ± {slope:.2}), which faces alone do with about 0.95: do they hold the plates as well? `--unknown` holds the whole joint against such readings",
+                law.exponent
+            ),
+        ));
     }
 }
 

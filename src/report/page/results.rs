@@ -1,5 +1,7 @@
 //! Results of a page: the headline, each case with its planes, media side by side.
 
+use std::fmt::Write;
+
 use crate::{
     diagnostic::{
         Caution,
@@ -55,18 +57,16 @@ pub(super) fn headline(estimate: &Estimate) -> Headline {
             || "The file states no requirement.".to_owned(),
             |(_, result)| {
                 let mut told = required(result, estimate.draws);
-                if estimate.beyond_strength() {
-                    told.push_str(
-                        "; of heat alone: a limit of strength does not hold, see the cautions",
-                    );
+                if let Some(why) = estimate.met_of_heat_alone() {
+                    let _ = write!(told, "; of heat alone: {why}, see the cautions");
                 }
                 sentence(&told)
             },
         ),
         grave: grave(&estimate.cautions),
         met: asked.map_or("", |(_, result)| match result.met {
-            // Heat alone is met where strength is not.
-            Met::Yes if estimate.beyond_strength() => "open",
+            // Heat alone is met where strength or clamp force is not.
+            Met::Yes if estimate.met_of_heat_alone().is_some() => "open",
             Met::Yes => "yes",
             Met::No => "no",
             Met::Uncertain => "open",

@@ -259,8 +259,8 @@ pub fn verdict(estimate: &Estimate, case: &CaseResult) -> String {
         if estimate.cases.len() > 1 {
             let _ = write!(line, " ({name} case, the worst)");
         }
-        if estimate.beyond_strength() {
-            line.push_str("; of heat alone: a limit of strength does not hold, see the cautions");
+        if let Some(why) = estimate.met_of_heat_alone() {
+            let _ = write!(line, "; of heat alone: {why}, see the cautions");
         }
         text.push_str(&wrapped(&line, WIDTH, 2));
         text.push('\n');
