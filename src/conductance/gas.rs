@@ -115,7 +115,7 @@ mod tests {
     }
 
     // 2γ/(1 + γ)/Pr with γ = 5/3 and Pr = 2/3, the kinetic theory of single atoms: 1.875. The tables of helium
-    // and argon at 300 K have Pr 0.664 and 0.667: 1 %. Walls that accommodate fully count 1 each.
+    // and argon at 300 K have Pr 0.664 and 0.665: 1 %. Walls that accommodate fully count 1 each.
     #[test]
     fn single_atoms_jump_as_the_kinetic_theory_says() {
         for name in ["helium", "argon"] {
@@ -126,8 +126,8 @@ mod tests {
         }
     }
 
-    // 2γ/(1 + γ)/Pr at 300 K by CoolProp 8.0.0, computed for this project, five digits of which γ and Pr keep
-    // four: 2e-4.
+    // 2γ/(1 + γ)/Pr at 300 K by CoolProp 8.0.0, computed for this project. The catalogue has γ and Pr of the same
+    // source to four places, so that the form alone is held: 2e-4.
     #[test]
     fn gas_parameter_follows_heat_ratio_and_prandtl_number() {
         for (name, beta) in [("air", 1.6508), ("nitrogen", 1.6268), ("helium", 1.8837)] {

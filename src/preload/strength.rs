@@ -163,7 +163,7 @@ mod tests {
     #[test]
     fn assembly_preloads_of_m10_fine_are_those_of_vdi_2230_2001() {
         // Fine-thread table of VDI 2230-1:2001, seen in a catalogue reprint: M10×1.25, kN, for 8.8, 10.9 and 12.9.
-        // Three digits, and 12.9 at the 1100 MPa that the table takes: 0.5 %.
+        // Printed to 0.1 kN, some cut instead of rounded: one unit.
         let thread = metric(10e-3, 1.25e-3);
         for (friction, printed) in [
             (0.10, [32.4, 47.5, 55.6]),
@@ -178,7 +178,7 @@ mod tests {
                 };
                 let found = assembly_preload(&thread, &target, TorsionRule::Plastic) * 1e-3;
                 assert!(
-                    (found / printed - 1.0).abs() < 5e-3,
+                    (found - printed).abs() < 0.1,
                     "{friction}: {found} {printed}"
                 );
             }
