@@ -83,7 +83,7 @@ impl Compare {
             console.outlast_reader();
         }
         let choice = self.field.choice()?;
-        let Some(entries) = self.entries(console)? else {
+        let Some(entries) = self.entries(console) else {
             return Ok(Outcome::Faulty);
         };
         let (found, maps) = match self.compared(&entries, (choice, figure.is_some())) {
@@ -148,7 +148,7 @@ impl Compare {
     }
 
     /// Every joint of every file; none where a file is at fault, after all were read.
-    fn entries(&self, console: &mut Console) -> Result<Option<Vec<Entry>>, Trouble> {
+    fn entries(&self, console: &mut Console) -> Option<Vec<Entry>> {
         let mut entries = Vec::new();
         let mut sound = true;
         for path in &self.files {
@@ -167,7 +167,7 @@ impl Compare {
                 }
             }
         }
-        Ok(sound.then_some(entries))
+        sound.then_some(entries)
     }
 
     /// What a file is called in the tables: none where it is the only one.
