@@ -1,7 +1,7 @@
 //! A requirement and how the joint stands to it, whichever way its faces are bent.
 
 use crate::{
-    estimate::{Bend, Estimate},
+    estimate::{Bend, CaseResult, Estimate},
     joint::{Limit, RequirementKind},
 };
 
@@ -73,6 +73,13 @@ impl Bent {
 }
 
 impl Estimate {
+    /// The case in which the requirement is judged; the first where nothing is required.
+    pub fn decisive(&self) -> Option<&CaseResult> {
+        let asked = self.requirement().map(|(name, _)| name);
+        let judged = self.cases.iter().find(|case| Some(case.name) == asked);
+        judged.or(self.cases.first())
+    }
+
     /// What lets the joint down whatever the heat says: a limit of strength, or scatter that may leave no
     /// clamp force.
     pub fn met_of_heat_alone(&self) -> Option<&'static str> {

@@ -150,7 +150,10 @@ struct Page<'a> {
 pub fn page(contents: &Contents) -> Result<String, String> {
     let estimate = contents.estimate;
     let case = estimate.cases.first();
-    let drivers = answers::drivers(contents.ranking, case.map_or(&[], |case| &case.drivers));
+    let drivers = answers::drivers(
+        contents.ranking,
+        estimate.decisive().map_or(&[], |case| &case.drivers),
+    );
     let name = case.map_or("", |case| case.name);
     let mut page = Page {
         title: &estimate.title,

@@ -59,7 +59,9 @@ pub fn estimate_in(estimate: &Estimate, detail: Detail, units: System) -> String
         if estimate.cases.len() > 1 {
             parts.push(thermal::cases(estimate, units));
         }
-        parts.push(thermal::drivers(&case.drivers));
+        if let Some(decisive) = estimate.decisive() {
+            parts.push(thermal::drivers(estimate, decisive));
+        }
     }
     parts.push(cautions(&estimate.cautions, detail));
     parts.push(assumptions(&estimate.assumptions, detail));

@@ -39,8 +39,7 @@ pub(super) struct Headline {
 /// Source to sink at the case that stands worst to the requirement, else at the first.
 pub(super) fn headline(estimate: &Estimate) -> Headline {
     let asked = estimate.requirement();
-    let worst = asked.and_then(|(name, _)| estimate.cases.iter().find(|case| case.name == name));
-    let case = worst.or(estimate.cases.first());
+    let case = estimate.decisive();
     let values = case.map_or_else(Default::default, |case| {
         band(&case.results.source_to_sink.resistance, 1.0)
     });

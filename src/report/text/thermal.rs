@@ -393,12 +393,17 @@ pub fn cases(estimate: &Estimate, units: System) -> String {
     headings.extend(columns.iter().map(|case| (case.name, Side::Left)));
     aligned(&headings, &rows)
 }
-/// What the spread comes from and what to do about it.
-pub fn drivers(drivers: &[Driver]) -> String {
+
+/// What the spread of a case comes from and what to do about it.
+pub fn drivers(estimate: &Estimate, case: &CaseResult) -> String {
+    let drivers = &case.drivers;
     if drivers.is_empty() {
         return String::new();
     }
-    let mut text = "what drives the spread of source to sink\n".to_owned();
+    let mut text = format!(
+        "what drives the spread of source to sink{}\n",
+        of_case(estimate, case)
+    );
     // Below one part in a hundred nothing is worth a line.
     let told: Vec<&Driver> = drivers
         .iter()
