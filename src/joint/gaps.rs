@@ -195,6 +195,17 @@ mod tests {
         assert!(near(plate.flatness_gap([0.0, 25e-3], 30e-6), 22.5e-6));
     }
 
+    /// A plane that falls by 10 µm from corner to corner.
+    fn tilted() -> Option<Arc<FlatnessMap>> {
+        let corners = vec![
+            [0.0, 0.0, 5e-6],
+            [0.08, 0.0, 0.0],
+            [0.0, 0.06, 0.0],
+            [0.08, 0.06, -5e-6],
+        ];
+        FlatnessMap::new(corners).map(Arc::new)
+    }
+
     #[test]
     fn a_face_is_out_of_flat_by_whatever_states_it() {
         let mut joint = fixture::joint();
@@ -205,13 +216,7 @@ mod tests {
         joint.plates[0].bow = Some(-30e-6);
         assert_eq!(joint.out_of_flat(0, Facing::Cold), Some(30e-6));
         joint.plates[0].bow = None;
-        joint.plates[0].flatness_map = FlatnessMap::new(vec![
-            [0.0, 0.0, 5e-6],
-            [0.08, 0.0, 0.0],
-            [0.0, 0.06, 0.0],
-            [0.08, 0.06, -5e-6],
-        ])
-        .map(Arc::new);
+        joint.plates[0].flatness_map = tilted();
         assert!(near(
             joint.out_of_flat(0, Facing::Cold).unwrap_or(0.0),
             10e-6
@@ -222,13 +227,7 @@ mod tests {
     fn gaps_of_both_faces_add() {
         let mut joint = fixture::joint();
         joint.plates[0].bow = Some(30e-6);
-        joint.plates[1].flatness_map = FlatnessMap::new(vec![
-            [0.0, 0.0, 5e-6],
-            [0.08, 0.0, 0.0],
-            [0.0, 0.06, 0.0],
-            [0.08, 0.06, -5e-6],
-        ])
-        .map(Arc::new);
+        joint.plates[1].flatness_map = tilted();
         assert!(near(joint.initial_gap(0, CORNER), 0.0));
         assert!(near(joint.initial_gap(0, CENTRE), 35e-6));
         assert!(near(joint.initial_gap(0, [0.08, 0.06]), 10e-6));

@@ -117,9 +117,8 @@ pub fn stress_in_service(thread: &Thread, load: Load) -> f64 {
 mod tests {
     use super::*;
     use crate::preload::{
-        fixture::m6,
+        fixture::{m6, spring_stack},
         losses::Compliance,
-        springs::{Disc, SpringStack},
     };
 
     const ELASTICITY: Elasticity = Elasticity {
@@ -231,20 +230,9 @@ mod tests {
 
     #[test]
     fn springs_that_stay_open_take_part_in_the_share_of_the_load() {
-        // Four sets of one disc 16 × 8.2 × 0.9 mm, cone 0.35 mm, flat at 1.32 kN: 900 N of clamp and 300 N of
-        // load leave them open, so that the bolt's side is as soft where it ends as their curve is steep there.
-        let springs = SpringStack {
-            disc: Disc {
-                outer_diameter: 16e-3,
-                inner_diameter: 8.2e-3,
-                thickness: 0.9e-3,
-                cone_height: 0.35e-3,
-                youngs_modulus: 206e9,
-                poisson: 0.3,
-            },
-            parallel: 1,
-            series: 4,
-        };
+        // Flat at 1.32 kN: 900 N of clamp and 300 N of load leave them open, so that the bolt's side is as soft
+        // where it ends as their curve is steep there.
+        let springs = spring_stack();
         let sprung = Elasticity {
             springs: Some(springs),
             ..ELASTICITY

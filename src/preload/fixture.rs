@@ -10,7 +10,24 @@ use crate::{
         Medium, Outline, Plate, Seat, Service, Sink, Source, Tightening, TorqueTightening, Zone,
     },
     numerics::distribution::Shape,
+    preload::springs::{Disc, SpringStack},
 };
+
+/// Four sets of one disc 16 × 8.2 × 0.9 mm, cone 0.35 mm: flat at 1.32 kN.
+pub const fn spring_stack() -> SpringStack {
+    SpringStack {
+        disc: Disc {
+            outer_diameter: 16e-3,
+            inner_diameter: 8.2e-3,
+            thickness: 0.9e-3,
+            cone_height: 0.35e-3,
+            youngs_modulus: 206e9,
+            poisson: 0.3,
+        },
+        parallel: 1,
+        series: 4,
+    }
+}
 
 /// Metric thread by its formulas, from diameter and pitch in m.
 pub fn metric(diameter: f64, pitch: f64) -> Thread {

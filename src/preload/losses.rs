@@ -242,7 +242,7 @@ pub fn force_in_service(assembly_force: f64, (losses, elasticity): (&Losses, &El
 #[cfg(test)]
 mod tests {
     use super::*;
-    use crate::preload::springs::Disc;
+    use crate::preload::fixture::spring_stack;
 
     #[test]
     fn two_plates_with_a_nut_settle_11_micrometres() {
@@ -273,21 +273,9 @@ mod tests {
         springs: None,
     };
 
-    /// Four sets of one disc 16 × 8.2 × 0.9 mm, cone 0.35 mm: flat at 1.32 kN.
     fn sprung() -> Elasticity {
         Elasticity {
-            springs: Some(SpringStack {
-                disc: Disc {
-                    outer_diameter: 16e-3,
-                    inner_diameter: 8.2e-3,
-                    thickness: 0.9e-3,
-                    cone_height: 0.35e-3,
-                    youngs_modulus: 206e9,
-                    poisson: 0.3,
-                },
-                parallel: 1,
-                series: 4,
-            }),
+            springs: Some(spring_stack()),
             ..STIFF
         }
     }
