@@ -43,7 +43,7 @@ pub(super) fn apply(tree: &mut Node, text: &str, shift: usize, collector: &mut C
 
 /// Sets a field of the file by its path.
 pub(super) fn set(file: &mut Node, path: &[Step], value: Given<'_>) -> Told {
-    let plates = plates(file);
+    let plates = plate_names(file);
     let setting = Setting {
         value,
         plates: &plates,
@@ -52,7 +52,7 @@ pub(super) fn set(file: &mut Node, path: &[Step], value: Given<'_>) -> Told {
 }
 
 /// Names of the plates, in order.
-fn plates(file: &Node) -> Vec<String> {
+fn plate_names(file: &Node) -> Vec<String> {
     let Some(node) = file.child(PLATE.name) else {
         return Vec::new();
     };
@@ -158,6 +158,7 @@ impl Given<'_> {
 #[derive(Clone, Copy, Debug)]
 struct Setting<'t> {
     value: Given<'t>,
+    /// Names of the plates, in order.
     plates: &'t [String],
 }
 

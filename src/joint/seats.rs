@@ -141,11 +141,13 @@ fn stated_holes(
             }
             Some(StatedHoles(diameters))
         }
-        Some(PerPlate::Both(diameter)) => {
-            Some(StatedHoles(common(bolt, plates.len(), Some(*diameter))))
-        }
+        Some(PerPlate::Both(diameter)) => Some(StatedHoles(clear_of_thread(
+            bolt,
+            plates.len(),
+            Some(*diameter),
+        ))),
         Some(PerPlate::Named { others, named }) => {
-            let mut diameters = common(bolt, plates.len(), *others);
+            let mut diameters = clear_of_thread(bolt, plates.len(), *others);
             for (name, span, diameter) in named {
                 let place = plates.iter().position(|plate| plate.name == *name);
                 let Some(place) = place else {
@@ -160,7 +162,11 @@ fn stated_holes(
 }
 
 /// One diameter for every plate but that which holds the thread.
-fn common(bolt: Bolt<'_>, plates: usize, diameter: Option<f64>) -> [Option<f64>; MOST_PLATES] {
+fn clear_of_thread(
+    bolt: Bolt<'_>,
+    plates: usize,
+    diameter: Option<f64>,
+) -> [Option<f64>; MOST_PLATES] {
     let mut all = [diameter; MOST_PLATES];
     if !matches!(bolt.engagement, Engagement::Nut) {
         all[plates - 1 - bolt.head_plate] = None;
