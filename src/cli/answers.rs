@@ -115,7 +115,8 @@ impl<'a> Answers<'a> {
             Err(refused) => {
                 let name = input::name(path);
                 let row = self.table.without(&name, Ended::Faulty, &refused.first());
-                self.put_failure(index, (&refused.json(), row), console);
+                let put = self.put(index, (&refused.json(), row), console);
+                console.tell_if_lost(put);
                 return Err(refused.trouble());
             }
         };
@@ -155,7 +156,8 @@ impl<'a> Answers<'a> {
                 };
                 let object = listing::unanswered(name, &message);
                 let row = self.table.without(name, ended, &message);
-                self.put_failure(index, (&object, row), console);
+                let put = self.put(index, (&object, row), console);
+                console.tell_if_lost(put);
                 Err(trouble.of_file(name))
             }
         }
@@ -174,18 +176,5 @@ impl<'a> Answers<'a> {
             console.json(object, Layout::of_batch(self.given))?;
         }
         Ok(())
-    }
-
-    /// The same for a failure, which is told as a message besides.
-    fn put_failure(
-        &self,
-        index: usize,
-        (object, row): (&serde_json::Value, String),
-        console: &mut Console,
-    ) {
-        match self.put(index, (object, row), console) {
-            Err(lost) if !lost.is_closed_pipe() => console.trouble(&lost),
-            _ => {}
-        }
     }
 }

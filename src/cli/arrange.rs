@@ -138,7 +138,7 @@ impl Arrange {
     pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
         let read: Vec<PathBuf> = self.files.iter().chain(&self.resume).cloned().collect();
         let permit = Permit::new(self.force, &read);
-        let figure = Figure::asked(
+        let figure = Figure::of_one(
             self.draw.as_deref(),
             self.files.len(),
             (permit, self.shown.system()),

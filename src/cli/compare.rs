@@ -77,8 +77,7 @@ impl Compare {
     pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
         input::stdin_at_most_once(&self.files)?;
         let permit = Permit::new(self.force, &self.files);
-        // Several joints are drawn on one sheet.
-        let figure = Figure::asked(self.draw.as_deref(), 1, (permit, self.shown.system()))?;
+        let figure = Figure::asked(self.draw.as_deref(), (permit, self.shown.system()))?;
         if figure.is_some() {
             console.outlast_reader();
         }

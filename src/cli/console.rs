@@ -275,7 +275,13 @@ impl Console {
     /// Writes a JSON value that tells a failure, which is told as a message besides; where it finds no way,
     /// that is told too.
     pub fn json_of_failure(&mut self, value: &serde_json::Value, layout: Layout) {
-        match self.json(value, layout).map_err(Trouble::from) {
+        let written = self.json(value, layout).map_err(Trouble::from);
+        self.tell_if_lost(written);
+    }
+
+    /// Tells why something beside another trouble was not written, unless nobody reads any more.
+    pub fn tell_if_lost(&mut self, written: Result<(), Trouble>) {
+        match written {
             Err(lost) if !lost.is_closed_pipe() => self.trouble(&lost),
             _ => {}
         }

@@ -122,7 +122,7 @@ impl Drivers {
     pub fn run(self, console: &mut Console) -> Result<Outcome, Trouble> {
         let units = self.shown.system();
         let permit = Permit::new(self.force, &self.files);
-        let figure = Figure::asked(self.draw.as_deref(), self.files.len(), (permit, units))?;
+        let figure = Figure::of_one(self.draw.as_deref(), self.files.len(), (permit, units))?;
         if figure.is_some() {
             console.outlast_reader();
         }

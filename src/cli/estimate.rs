@@ -152,13 +152,14 @@ impl Estimate {
                 "write them one by one, or leave --nodes out",
             ));
         }
+        let target = permit.target(path)?;
         if matches!(self.field.choice()?, Choice::Cone) {
             return Err(Trouble::usage(
                 "the closed form solves no means of the plates, so that it has no nodes",
                 "leave out --field cone",
             ));
         }
-        Ok(Some(permit.target(path)?))
+        Ok(Some(target))
     }
 
     /// The estimate of a joint and what was asked for beside it.

@@ -20,24 +20,32 @@ pub struct Figure {
 }
 
 impl Figure {
-    /// The figure that `--draw` names; of several inputs none is drawn.
+    /// The figure that `--draw` names.
     pub fn asked(
         path: Option<&Path>,
-        inputs: usize,
         (permit, units): (Permit, System),
     ) -> Result<Option<Self>, Trouble> {
         let Some(path) = path else { return Ok(None) };
-        if inputs > 1 {
-            return Err(Trouble::usage(
-                format!("--draw draws one joint, and {inputs} are named"),
-                "draw them one by one, or leave --draw out",
-            ));
-        }
         Ok(Some(Self {
             format: output::format(path)?,
             target: permit.target(path)?,
             units,
         }))
+    }
+
+    /// The same where it shows one input: of several none is drawn.
+    pub fn of_one(
+        path: Option<&Path>,
+        inputs: usize,
+        how: (Permit, System),
+    ) -> Result<Option<Self>, Trouble> {
+        if path.is_some() && inputs > 1 {
+            return Err(Trouble::usage(
+                format!("--draw draws one joint, and {inputs} are named"),
+                "draw them one by one, or leave --draw out",
+            ));
+        }
+        Self::asked(path, how)
     }
 
     /// Draws it into its file and tells so.

@@ -200,7 +200,7 @@ impl Fit {
         let several = named.len() > 1;
         let tables = self.batch.files(named);
         let permit = Permit::new(self.force, &self.files);
-        let figure = Figure::asked(
+        let figure = Figure::of_one(
             self.draw.as_deref(),
             named.len(),
             (permit, self.shown.system()),

@@ -149,7 +149,7 @@ impl Target {
             Trouble::Failure(format!(
                 "`{}` cannot be written: {}",
                 self.path.display(),
-                bare(&found)
+                without_temporary_path(&found)
             ))
         })
     }
@@ -176,7 +176,7 @@ impl Target {
 }
 
 /// A fault without the path of the temporary file behind it, for which nobody asked.
-fn bare(found: &io::Error) -> String {
+fn without_temporary_path(found: &io::Error) -> String {
     let told = found.to_string();
     match told.split_once(" at path ") {
         Some((fault, _)) => fault.to_owned(),

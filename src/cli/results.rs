@@ -5,7 +5,7 @@ use crate::{
         batch::Shard,
         console::Trouble,
         input,
-        output::{Permit, Target},
+        output::{self, Permit, Target},
     },
     report::csv::Table,
 };
@@ -140,7 +140,11 @@ pub fn folder(folder: &Path) -> Result<(), Trouble> {
     if ends_like_a_file(folder) {
         return Err(Trouble::usage(
             format!("`{shown}` is the name of a file, where a folder is asked for"),
-            "name a folder; its files are named by what they hold",
+            if output::format(folder).is_ok() {
+                "name a folder; a command that draws one figure takes its name by --draw FIGURE"
+            } else {
+                "name a folder; its files are named by what they hold"
+            },
         ));
     }
     Ok(())

@@ -11,7 +11,7 @@ use crate::{
         field::Field,
         figure::Figure,
         input::{self, Source},
-        output::{self, Permit},
+        output::Permit,
         shown::Shown,
     },
     estimate::TorqueSweep,
@@ -86,20 +86,7 @@ impl Torque {
         }
         let units = self.shown.system();
         let permit = Permit::new(self.force, &self.files);
-        let figure = Figure::asked(self.draw.as_deref(), self.files.len(), (permit, units))?;
-        if let Some(folder) = self
-            .out
-            .as_deref()
-            .filter(|path| output::format(path).is_ok())
-        {
-            return Err(Trouble::usage(
-                format!(
-                    "--out names a folder for results, and `{}` a figure",
-                    folder.display()
-                ),
-                "--draw FIGURE draws the curve",
-            ));
-        }
+        let figure = Figure::of_one(self.draw.as_deref(), self.files.len(), (permit, units))?;
         if figure.is_some() {
             console.outlast_reader();
         }

@@ -156,7 +156,7 @@ fn nodes_carry_the_band_of_two_plates_and_are_refused_where_there_are_none() {
             .assert()
     };
     assert!(stderr(&cone(&["nodes.csv"]).code(2)).contains("--force"));
-    assert!(stderr(&cone(&["other.csv"]).code(1)).contains("--field cone"));
+    assert!(stderr(&cone(&["other.csv"]).code(2)).contains("--field cone"));
     assert_eq!(names(folder.path()), ["nodes.csv"], "no half file is left");
 }
 
