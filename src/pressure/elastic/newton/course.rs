@@ -15,6 +15,8 @@ const LAST_OF_COARSEST: f64 = 1e-5;
 const MANY: usize = 30;
 /// Steps after which faces are softened where many columns still change.
 const PATIENCE: usize = 10;
+/// Steps with faces as stated after which solutions are accurate though columns still change.
+const SETTLING: usize = 30;
 /// Stiffness of softened faces over the stated one, and how much harder they get at a time.
 const SOFTENED: f64 = 1e-3;
 const HARDER: f64 = 32.0;
@@ -87,6 +89,8 @@ impl Course {
         self.tolerance = match changed {
             0 => self.last,
             _ if self.is_accurate() => self.last,
+            // Rough solutions waver about a set that they do not tell.
+            _ if self.hardness >= 1.0 && step - self.began >= SETTLING => self.last,
             _ if changed > MANY => MANY_CHANGE,
             // As many as before: only an accurate solution tells which.
             _ if step > PATIENCE && changed >= last => self.last,
