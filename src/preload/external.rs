@@ -62,10 +62,7 @@ impl ServiceLoad {
     /// raise the bolt's share.
     /// Source: VDI 2230-1. Checked: `load_worked_by_hand`.
     pub fn on(&self, elasticity: &Elasticity, clamp: Bounds) -> Shared {
-        let factor = |force: f64, introduction: f64| {
-            let plates = elasticity.compliance.plates;
-            introduction * plates / (elasticity.bolt_side(force) + plates)
-        };
+        let factor = |force: f64, introduction: f64| introduction * elasticity.load_factor(force);
         let Self { load, introduction } = *self;
         let load_factor = Bounds::uniform([
             factor(clamp.low, introduction.low),

@@ -77,52 +77,20 @@ pub struct Compliance {
     pub plates: f64,
 }
 
-impl Compliance {
-    /// Force lost by settling `F_Z`, N.
-    ///
-    /// ```text
-    /// F_Z = f_Z / (δ_S + δ_P)
-    /// ```
-    ///
-    /// `f_Z` is the settling of the whole stack, m; `δ_S` and `δ_P` the resiliences of bolt and plates, m/N.
-    /// Valid: bolt and plates elastic.
-    /// Source: VDI 2230-1. Checked: `example_a_of_the_resilience_chain`.
-    pub fn settling_loss(&self, settling: f64) -> f64 {
-        settling / (self.bolt + self.plates)
-    }
-
-    /// Force that temperature adds, N; negative where it takes.
-    ///
-    /// ```text
-    /// ΔF = ( Σ ε_P l_P − ε_S l_K ) / (δ_S + δ_P)
-    /// ```
-    ///
-    /// | symbol | quantity | SI unit | field |
-    /// |---|---|---|---|
-    /// | `ε_P`, `l_P` | ΔL/L and thickness of a clamped part | 1, m | `strain`, `length` of `plates` |
-    /// | `ε_S`, `l_K` | ΔL/L of the bolt and grip | 1, m | `strain`, `length` of `bolt` |
-    ///
-    /// The strains are integrated from assembly to service temperature; in the cold no single coefficient serves.
-    /// Valid: elastic, moduli as at room temperature.
-    /// Source: VDI 2230-1. Checked: `warming_aluminium_under_stainless_adds_741_newtons`.
-    pub fn temperature_gain(&self, plates: &[Part], bolt: Part) -> f64 {
-        growth(plates, bolt) / (self.bolt + self.plates)
-    }
-
-    /// Load factor of a load that enters under head and nut, 1.
-    ///
-    /// ```text
-    /// Φ = δ_P/(δ_S + δ_P)
-    /// ```
-    ///
-    /// Valid: a load along the bolt's axis, faces in contact; one that enters nearer the faces takes less.
-    /// Source: VDI 2230-1. Checked: `example_a_of_the_resilience_chain`.
-    pub fn load_factor(&self) -> f64 {
-        self.plates / (self.bolt + self.plates)
-    }
-}
-
-/// Growth of the clamped parts over that of the bolt, m: `Σ ε_P l_P − ε_S l_K`.
+/// Growth of the clamped parts over that of the bolt, m.
+///
+/// ```text
+/// Δl = Σ ε_P l_P − ε_S l_K
+/// ```
+///
+/// | symbol | quantity | SI unit | field |
+/// |---|---|---|---|
+/// | `ε_P`, `l_P` | ΔL/L and thickness of a clamped part | 1, m | `strain`, `length` of `plates` |
+/// | `ε_S`, `l_K` | ΔL/L of the bolt and grip | 1, m | `strain`, `length` of `bolt` |
+///
+/// The strains are integrated from assembly to service temperature; in the cold no single coefficient serves.
+/// Valid: lengths as at assembly, every part at one temperature.
+/// Source: VDI 2230-1. Checked: `warming_aluminium_under_stainless_adds_741_newtons`.
 pub fn growth(plates: &[Part], bolt: Part) -> f64 {
     plates.iter().map(Part::growth).sum::<f64>() - bolt.growth()
 }
@@ -168,7 +136,8 @@ impl Elasticity {
     ///
     /// Valid: elastic; the springs follow without friction.
     /// Source: compatibility of the clamped stack, VDI 2230-1 with the curve of the springs added.
-    /// Checked: `springs_follow_what_a_stiff_bolt_loses`, `a_flat_stack_is_no_longer_a_spring`.
+    /// Checked: `springs_follow_what_a_stiff_bolt_loses`, `a_flat_stack_is_no_longer_a_spring`,
+    /// `example_a_of_the_resilience_chain`.
     pub fn after(&self, force: f64, growth: f64) -> f64 {
         let stiff = self.compliance.bolt + self.compliance.plates;
         let Some(springs) = &self.springs else {
@@ -199,6 +168,24 @@ impl Elasticity {
             .springs
             .map_or(0.0, |springs| springs.compliance(force));
         self.compliance.bolt + springs
+    }
+
+    /// Load factor of a load that enters under head and nut, at a force of the bolt, 1.
+    ///
+    /// ```text
+    /// Φ_K = δ_P/(δ_S + δ_P)
+    /// ```
+    ///
+    /// | symbol | quantity | SI unit | field |
+    /// |---|---|---|---|
+    /// | `δ_S` | compliance of bolt and disc springs at the force | m/N | `bolt_side` |
+    /// | `δ_P` | compliance of the clamped parts | m/N | `compliance.plates` |
+    ///
+    /// Valid: a load along the bolt's axis, faces in contact; one that enters nearer the faces takes less.
+    /// Source: VDI 2230-1. Checked: `example_a_of_the_resilience_chain`.
+    pub fn load_factor(&self, force: f64) -> f64 {
+        let plates = self.compliance.plates;
+        plates / (self.bolt_side(force) + plates)
     }
 }
 
@@ -354,26 +341,29 @@ mod tests {
             strain: expansion * rise,
         };
         // Aluminium 12 and 8 mm under a steel bolt of 20 mm, 50 K: 20 · (23.6 − 11.5) · 50 = 12.1 µm over 6 nm/N.
-        let gain = |rise: f64| {
+        let gain = |elasticity: &Elasticity, rise: f64| {
             let plates = [12e-3, 8e-3].map(|length| part(length, 23.6e-6, rise));
-            let bolt = part(20e-3, 11.5e-6, rise);
-            (
-                STIFF.compliance.temperature_gain(&plates, bolt),
-                growth(&plates, bolt),
-            )
+            let longer = growth(&plates, part(20e-3, 11.5e-6, rise));
+            elasticity.after(5000.0, longer) - 5000.0
         };
-        let (warm, longer) = gain(50.0);
+        let warm = gain(&STIFF, 50.0);
         assert!((warm / (12.1e-6 / 6e-9) - 1.0).abs() < 1e-12, "{warm}");
-        // The same balance of lengths as without the short form, and as much lost in the cold.
-        assert!((STIFF.after(5000.0, longer) - 5000.0 - warm).abs() < 1e-9);
-        assert!((gain(-50.0).0 + warm).abs() < 1e-9);
+        // As much is lost in the cold.
+        assert!((gain(&STIFF, -50.0) + warm).abs() < 1e-9);
         // A softer plate keeps more of what the bolt's side lets go: twice 6 nm/N is half the gain.
-        let soft = Compliance {
-            bolt: 5e-9,
-            plates: 7e-9,
+        let soft = Elasticity {
+            compliance: Compliance {
+                bolt: 5e-9,
+                plates: 7e-9,
+            },
+            springs: None,
         };
-        let plates = [part(20e-3, 23.6e-6, 50.0)];
-        let halved = soft.temperature_gain(&plates, part(20e-3, 11.5e-6, 50.0));
-        assert!((halved / warm - 0.5).abs() < 1e-12);
+        assert!((gain(&soft, 50.0) / warm - 0.5).abs() < 1e-12);
+    }
+
+    #[test]
+    fn the_load_factor_is_the_share_of_the_plates_in_what_gives() {
+        // 1 of 6 nm/N.
+        assert!((STIFF.load_factor(5000.0) - 1.0 / 6.0).abs() < 1e-12);
     }
 }
