@@ -132,9 +132,9 @@ impl Elasticity {
     /// | `s(F)` | deflection of the springs, none once flat | m | `springs` |
     /// | `Δl` | growth of the clamped stack over that of the bolt, settling negative | m | `growth` |
     ///
-    /// Without springs `F = F₀ + Δl/(δ_S + δ_P)`.
+    /// Without springs `F = F₀ + Δl/(δ_S + δ_P)`; settling `f_Z` then takes `F_Z = f_Z/(δ_S + δ_P)`.
     ///
-    /// Valid: elastic; the springs follow without friction.
+    /// Valid: elastic, moduli as at room temperature; the springs follow without friction.
     /// Source: compatibility of the clamped stack, VDI 2230-1 with the curve of the springs added.
     /// Checked: `springs_follow_what_a_stiff_bolt_loses`, `a_flat_stack_is_no_longer_a_spring`,
     /// `example_a_of_the_resilience_chain`.

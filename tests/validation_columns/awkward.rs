@@ -1,7 +1,7 @@
 //! Plates that make the search for contact hard: long thin tails, slight forces, rigid heads, stuck faces.
 //!
-//! What a field must hold is checked on each: the energy has one least value, so that a set in balance
-//! with pressures only where faces touch is the set, however it was found.
+//! What a field must hold is checked on each: where faces slide the energy has one least value, so that a
+//! set in balance with pressures only where faces touch is the set, however it was found.
 
 use proptest::{prelude::*, test_runner::RngSeed};
 use ringsum::pressure::elastic::{Compliance, FaceFriction, Fineness, HeadModel};
@@ -31,12 +31,19 @@ fn holds(plates: &Plates) {
     let field = plates.field();
     let face = &field.faces[0];
     let load: f64 = plates.forces.iter().sum();
-    let off = (face.force() / load - 1.0).abs();
-    // The worst of 400 such plates was 9e-5, where columns wavered; else the last linear solution leaves
-    // 1e-5 of the load.
-    assert!(off < 2e-4, "{off:e}");
-    // After a hundred steps columns may go on changing that press less than 1e-4 of the peak.
-    assert!(field.health.complementarity <= 1e-4, "{:?}", field.health);
+    // The last linear solution leaves 1e-5 of the load. After a hundred steps columns may go on changing
+    // that press less than 1e-4 of the peak: the worst of 400 plates was then 9e-5 off in its force.
+    let (off, contradiction) = if field.health.newton_steps < 100 {
+        (1e-5, 0.0)
+    } else {
+        (2e-4, 1e-4)
+    };
+    assert!((face.force() / load - 1.0).abs() < off, "{}", face.force());
+    assert!(
+        field.health.complementarity <= contradiction,
+        "{:?}",
+        field.health
+    );
     assert!(
         face.pressure
             .iter()
