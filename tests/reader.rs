@@ -675,6 +675,24 @@ fn bad_overrides_are_told() {
 }
 
 #[test]
+fn an_override_that_leaves_out_the_table_is_shown_where_the_field_is() {
+    let help = |set: &str| {
+        let faults = joint::read_with(&plain(), &[set.to_owned()]).expect_err(set);
+        faults.faults[0].1.help.clone().expect("a way on")
+    };
+    for (set, expected) in [
+        ("torque=9 N m", "`fastener.torque`"),
+        ("torqe=9 N m", "`fastener.torque`"),
+        ("thickness=2 mm", "`plate.thickness`"),
+        ("medium=vacuum", "`service.medium`"),
+        // What no table has is answered with what may stand here.
+        ("zebra=1", "known are"),
+    ] {
+        assert!(help(set).contains(expected), "{set}: {}", help(set));
+    }
+}
+
+#[test]
 fn the_schema_in_the_repository_is_that_of_the_fields() {
     let path = PathBuf::from(env!("CARGO_MANIFEST_DIR")).join("joints/joint.schema.json");
     let schema = serde_json::to_string_pretty(&joint::schema()).expect("JSON") + "\n";

@@ -168,6 +168,20 @@ fn bad(step: &Step, message: impl Into<String>) -> Fault {
     fault(CODE, &step.span, message)
 }
 
+/// Paths to fields of such a name in the tables of a section: `fastener.torque` for `torque`.
+fn deeper(name: &str, section: &Section) -> Vec<String> {
+    let tables = section.fields.iter().filter_map(|field| match field.kind {
+        Kind::Table(inner) | Kind::List(inner) => Some((field.key, inner)),
+        _ => None,
+    });
+    tables
+        .filter_map(|(table, inner)| {
+            let key = diagnostic::nearest(name, inner.keys())?;
+            Some(format!("{table}.{key}"))
+        })
+        .collect()
+}
+
 fn set_in(
     node: &mut Node,
     section: &'static Section,
@@ -184,7 +198,11 @@ fn set_in(
             format!("there is no field `{}` here", short(&step.name)),
         )
         .expecting("not a key of this table");
-        let told = told.nearest(&step.name, section.keys());
+        let mut told = told.nearest(&step.name, section.keys());
+        if told.help.is_none() {
+            let deeper = deeper(&step.name, section);
+            told = told.meaning(&deeper.iter().map(String::as_str).collect::<Vec<_>>());
+        }
         return Err(Box::new(if told.help.is_some() {
             told
         } else {
