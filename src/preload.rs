@@ -25,7 +25,8 @@ pub mod strength;
 pub mod torque;
 
 pub use cautions::{
-    Group, group_cautions, opened, over_in_service, parts, springs_flat, window_cautions,
+    Group, group_cautions, hardly_clamped, opened, over_in_service, parts, springs_flat,
+    window_cautions,
 };
 pub use external::{ServiceLoad, Shared};
 pub use force::{Place, clamp_force, force_band};

@@ -83,6 +83,7 @@ fn preload_cautions(chain: &Chain) -> Vec<Caution> {
             let left = prepared.balance(joint, (case, &Realisation::losing(1.0)), force);
             let label = format!("{name}, {} case, lowest force", named.name);
             found.extend(preload::opened(&label, left));
+            found.extend(preload::hardly_clamped(&label, [force, left]));
             let clamp = prepared.clamp(joint, fastener, case);
             found.extend(preload::springs_flat(
                 &label_of(&name, named.name),

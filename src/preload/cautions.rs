@@ -14,7 +14,7 @@ use crate::{
 
 mod service;
 
-pub use service::{opened, over_in_service, parts, springs_flat};
+pub use service::{hardly_clamped, opened, over_in_service, parts, springs_flat};
 
 /// Strength use at nominal below which a wrong size or unit is likelier than a choice.
 const LOW_USE: f64 = 0.15;

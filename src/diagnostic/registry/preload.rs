@@ -232,6 +232,18 @@ pub(super) const ENTRIES: &[Entry] = &[
              material nearer to the plates, or raise the initial clamp force within its limits.",
         ],
     ),
+    Grave.entry(
+        "preload/hardly-clamped",
+        "Next to no clamp force left in service",
+        [
+            "Less than a tenth of the low force is left after settling, relaxation and temperature change \
+             (house rule, no source). Settling is a guide value, and so is relaxation: the joint may part \
+             where they are a little larger. Contact conductance falls nearly in proportion to the force.",
+            "Lengthen the grip, add washers of low expansion or disc springs, choose a bolt material nearer \
+             to the plates, control the torque more closely, or raise the initial clamp force within its \
+             limits.",
+        ],
+    ),
     Range.entry(
         "preload/temperature-not-acting",
         "Service far from assembly, and the clamp force stays",

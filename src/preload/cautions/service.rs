@@ -6,6 +6,10 @@ use crate::{
     preload::{cautions::caution, external::Shared, limits::LimitUse, springs::SpringStack},
 };
 
+/// Share of its force below which what a bolt keeps is within the doubt of the guide values of settling.
+/// House rule, no source.
+const LEAST_KEPT: f64 = 0.1;
+
 /// Caution for a bolt whose balance of losses is negative, N.
 pub fn opened(name: &str, balance: f64) -> Option<Caution> {
     (balance < 0.0).then(|| {
@@ -16,6 +20,21 @@ pub fn opened(name: &str, balance: f64) -> Option<Caution> {
                  the joint is taken as open there (0 N). Use a longer or less stiff bolt, a higher preload or \
                  matched expansion.",
                 -balance
+            ),
+        )
+    })
+}
+
+/// Caution for a bolt that keeps next to nothing of the force it was tightened to, N.
+pub fn hardly_clamped(name: &str, [tightened, left]: [f64; 2]) -> Option<Caution> {
+    (0.0..LEAST_KEPT * tightened).contains(&left).then(|| {
+        caution(
+            "preload/hardly-clamped",
+            format!(
+                "{name}: settling, relaxation and temperature leave {left:.0} N of {tightened:.0} N, \
+                 {:.1} %; a little more of any of them opens the joint. Use a longer or less stiff bolt, a \
+                 higher preload or matched expansion.",
+                100.0 * left / tightened
             ),
         )
     })

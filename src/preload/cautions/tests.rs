@@ -186,6 +186,20 @@ fn opened_joint_is_named_only_when_negative() {
 }
 
 #[test]
+fn a_bolt_that_keeps_less_than_a_tenth_is_named() {
+    let named = |left: f64| hardly_clamped("M6", [2000.0, left]);
+    // From a tenth on it keeps enough; below nothing it has opened, which is told of its own.
+    assert_eq!(named(200.0), None);
+    assert_eq!(named(-0.1), None);
+    for left in [0.0, 2.3, 199.9] {
+        let caution = named(left).unwrap();
+        assert_eq!(caution.code, "preload/hardly-clamped");
+        assert!(caution.text.contains("of 2000 N"), "{}", caution.text);
+    }
+    assert!(named(2.3).unwrap().text.contains("2 N of 2000 N, 0.1 %"));
+}
+
+#[test]
 fn torque_window_carries_its_duties() {
     let supports = supports();
     let codes = |fastener: &Fastener| -> Vec<&'static str> {
