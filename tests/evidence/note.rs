@@ -32,13 +32,23 @@ pub fn row(name: &str, run: impl FnOnce()) -> Value {
     let largest = checks.iter().map(|[_, off]| off.abs()).fold(0.0, f64::max);
     let thousandth = |value: f64| (1e3 * value).round() / 1e3;
     let found: Vec<f64> = checks.iter().map(|[share, _]| thousandth(*share)).collect();
+    let many = if found.len() == 1 { "" } else { "s" };
     json!({
         "name": name,
-        "values": format!("{} values within {:.2} %", found.len(), 100.0 * largest),
+        "values": format!("{} value{many} {}", found.len(), within(100.0 * largest)),
         "accepted": [-1.0, 1.0],
         "band": null,
         "found": found,
     })
+}
+
+/// A deviation in percent; one too small for its digits is said to be so, not to be none.
+fn within(percent: f64) -> String {
+    if percent < 0.005 && percent > 0.0 {
+        "within 0.01 %".to_owned()
+    } else {
+        format!("within {percent:.2} %")
+    }
 }
 
 /// Keeps a part of the evidence, or holds it against what is kept.
