@@ -49,6 +49,16 @@ fn beyond_cone(fields: &[(String, &'static str)]) -> String {
     named.join(", ")
 }
 
+/// What else to try where a field was not found.
+fn way_on(found: &pressure::elastic::Failure) -> &'static str {
+    match found {
+        pressure::elastic::Failure::NotConverged { .. } => {
+            "; a plate far thinner than the others defeats it: state a foil as a filler, or take `--field cone` for two plates"
+        }
+        _ => "",
+    }
+}
+
 /// How many draws, from which seed.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub struct Options {
@@ -185,7 +195,7 @@ pub enum Failure {
     #[error("the plates cannot be cut into networks: {0}")]
     Plates(#[from] resistance::Failure),
     /// The elastic contact has no field.
-    #[error("the elastic contact has no field: {0}")]
+    #[error("the elastic contact has no field: {}{}", .0, way_on(.0))]
     Contact(pressure::elastic::Failure),
     /// The faces do not carry the bolts.
     #[error(

@@ -15,6 +15,8 @@ use crate::{
 const LARGEST_PLAN: f64 = 3.0;
 /// Largest thickness of a plate, and height of its feet and ribs, m.
 const LARGEST_HEIGHT: f64 = 0.5;
+/// Least thickness of a plate, m: what is thinner is a foil, and a foil is a layer between plates.
+const LEAST_THICKNESS: f64 = 50e-6;
 /// Thickness over the shortest side in plan up to which a body is a plate or a block.
 const SLENDEREST: f64 = 10.0;
 /// Outer diameter of a seat over the nominal diameter of its thread: wide washers have 5 to 8.
@@ -25,13 +27,20 @@ pub(super) fn plates(plates: &[PlateDraft], collector: &mut Collector) {
     for plate in plates {
         let name = &plate.name;
         let span = |key: &str| place(&plate.record, key);
-        if let Some([_, thickness]) = plate.thickness_ends() {
-            let what = format!("plate `{name}` is {} thick", length(thickness));
-            within(
-                (&what, &span("thickness")),
-                (thickness, LARGEST_HEIGHT),
-                collector,
-            );
+        if let Some([thin, thick]) = plate.thickness_ends() {
+            let what = |thickness| format!("plate `{name}` is {} thick", length(thickness));
+            let span = span("thickness");
+            within((&what(thick), &span), (thick, LARGEST_HEIGHT), collector);
+            // 50 µm as text is a last digit off 50 µm.
+            let is_plate = thin >= LEAST_THICKNESS * (1.0 - 1e-9);
+            collector.require(is_plate, || {
+                fault("geometry/size-limit", &span, what(thin))
+                    .expecting(format!(
+                        "at least {}: a limit of this program",
+                        length(LEAST_THICKNESS)
+                    ))
+                    .help("check the unit; a foil between two plates is a `filler`, a coat a `plating`")
+            });
         }
         if let Some(outline) = &plate.outline {
             plan(plate, outline, collector);

@@ -97,7 +97,7 @@ pub(super) const ENTRIES: &[Entry] = &[
         "A size beyond the limits of this program",
         "Sizes beyond these are more likely a wrong unit than a bolted joint, and nothing was checked there: 3 m \
          along a plate; 0.5 m of thickness of a plate, or of height of a rib or foot; a thickness of ten times the \
-         shortest side in plan; a head, nut or washer ten thread diameters across.",
+         shortest side in plan; a thickness below 50 µm; a head, nut or washer ten thread diameters across.",
         "Check the unit. Of a larger structure describe the part around the joint; a long bar may be cut where \
          its temperature is even.",
     ),
