@@ -99,17 +99,16 @@ pub(super) fn read(text: &str) -> Result<Rack, CatalogFault> {
         rows: Vec::new(),
     };
     for raw in &file.grade {
+        let grade = checked(raw, &file.sources)?;
         let names = std::iter::once(&raw.name).chain(&raw.aliases);
         let row = Row {
             names: names.map(|name| plain(name)).collect(),
-            diameters: raw
-                .diameters
-                .map_or([0.0, f64::INFINITY], |range| range.map(|end| end * 1e-3)),
+            diameters: grade.diameters.unwrap_or([0.0, f64::INFINITY]),
             place: rack.grades.len(),
         };
         refuse_clash(&raw.name, &row, &rack.rows)?;
         rack.rows.push(row);
-        rack.grades.push(checked(raw, &file.sources)?);
+        rack.grades.push(grade);
     }
     Ok(rack)
 }
@@ -149,6 +148,7 @@ fn checked(raw: &RawGrade, sources: &Sources) -> Result<Grade, CatalogFault> {
         youngs_modulus: values.datum(&raw.youngs_modulus, 1e9)?.value,
         expansion: values.datum(&raw.expansion, 1e-6)?.value,
         conductivity: values.datum(&raw.conductivity, 1.0)?,
+        diameters: raw.diameters.map(|range| range.map(|end| end * 1e-3)),
         like: raw.like.clone(),
     };
     let ordered = grade

@@ -162,6 +162,8 @@ pub struct Grade {
     pub name: String,
     /// Standard.
     pub standard: String,
+    /// Smallest and largest nominal diameter it is given for, m, where the standard limits them.
+    pub diameters: Option<[f64; 2]>,
     /// Tensile strength, Pa.
     pub tensile: Datum,
     /// 0.2 % yield, Pa; some grades have none on purpose.

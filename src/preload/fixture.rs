@@ -60,6 +60,7 @@ pub fn grade() -> Grade {
     Grade {
         name: "8.8".into(),
         standard: "ISO 898-1".into(),
+        diameters: None,
         tensile: datum(800e6),
         yield_strength: Some(datum(640e6)),
         proof: Some(datum(580e6)),

@@ -119,6 +119,23 @@ fn words_filter_the_catalogue_and_a_slip_meets_its_neighbour() {
 }
 
 #[test]
+fn a_grade_split_by_diameter_says_which_row_holds_where() {
+    let told = stdout(&ringsum().args(["list", "grades", "8.8"]).assert().code(0));
+    let rows: Vec<Vec<&str>> = told
+        .lines()
+        .filter(|line| line.starts_with("8.8 "))
+        .map(|line| line.split("  ").filter(|cell| !cell.is_empty()).collect())
+        .collect();
+    // ISO 898-1: 800 MPa up to 16 mm, 830 MPa above.
+    let cells = rows.iter().map(|row| [row[2].trim(), row[3].trim()]);
+    assert_eq!(
+        cells.collect::<Vec<_>>(),
+        [["1.5–16", "800"], [">16–39", "830"]],
+        "{told}"
+    );
+}
+
+#[test]
 fn pages_and_completions_know_every_flag_of_every_command() {
     let help = stdout(&ringsum().arg("--help").assert().code(0));
     let commands: Vec<&str> = help

@@ -68,6 +68,7 @@ pub fn grades(records: &[Grade]) -> Listing {
         headings: vec![
             words("name"),
             words("standard"),
+            words("diameter\nmm"),
             numbers("tensile\nMPa"),
             numbers("yield\nMPa"),
             numbers("proof\nMPa"),
@@ -79,6 +80,7 @@ pub fn grades(records: &[Grade]) -> Listing {
                 cells: vec![
                     record.name.clone(),
                     record.standard.clone(),
+                    diameters(record, records),
                     shown(&record.tensile, 1e6),
                     shown_if(record.yield_strength.as_ref(), 1e6),
                     shown_if(record.proof.as_ref(), 1e6),
@@ -88,6 +90,7 @@ pub fn grades(records: &[Grade]) -> Listing {
                 record: json!({
                     "name": record.name,
                     "standard": record.standard,
+                    "diameters": record.diameters,
                     "tensile": datum(&record.tensile),
                     "yield_strength": datum_if(record.yield_strength.as_ref()),
                     "proof": datum_if(record.proof.as_ref()),
@@ -99,6 +102,24 @@ pub fn grades(records: &[Grade]) -> Listing {
             })
             .collect(),
     }
+}
+
+/// Diameters a grade is given for, mm; a row that goes on where another of its name ends does not hold that
+/// end.
+fn diameters(record: &Grade, all: &[Grade]) -> String {
+    let Some([least, most]) = record.diameters else {
+        return "–".to_owned();
+    };
+    let below = all
+        .iter()
+        .filter(|other| other.name == record.name)
+        .filter_map(|other| other.diameters)
+        .find(|other| other[1] < least);
+    let from = below.map_or_else(
+        || brief(least * 1e3),
+        |other| format!(">{}", brief(other[1] * 1e3)),
+    );
+    format!("{from}–{}", brief(most * 1e3))
 }
 
 /// Heads, nuts and washers as seats.
