@@ -5,13 +5,14 @@ mod parts;
 
 use crate::{
     catalog::{self, SeatRecord, Status, Thread},
+    diagnostic::Fault,
     joint::{
         Engagement, Hardware, MOST_PLATES, Seat,
         collector::{Collector, Wording, fault},
         contact::one_for_each,
         plates::PlateDraft,
         record::{PerPlate, Record},
-        tree::short,
+        tree::{Span, short},
         walk::missing,
     },
     units::{self, Quantity},
@@ -22,6 +23,11 @@ pub(super) use parts::{HEADS, Parts};
 /// A washer spreads the pressure of the head by this multiple of its thickness in diameter
 /// (a rule of the kind VDI 2230 uses, from memory).
 const WASHER_SPREAD: f64 = 1.6;
+
+/// Hole at the face of a plate that holds the thread, in diameters of the thread: from a tapped hole to one
+/// recessed or with an insert, of which the widest have twice the diameter (common practice, no source).
+const NARROWEST_MOUTH: f64 = 0.5;
+const WIDEST_MOUTH: f64 = 2.5;
 
 /// What head and nut press on.
 #[derive(Clone, Copy, Debug)]
@@ -84,34 +90,47 @@ pub(super) fn holes(
                 None => *assumed.insert(medium_hole(bolt, collector)?),
             },
         };
-        let clear = diameter > bolt.thread.diameter;
-        let fits = clear || (threaded && plate == far && diameter > 0.5 * bolt.thread.diameter);
-        collector.require(fits, || {
-            let place = if own.is_some() {
-                plates[plate].record.span("hole")
-            } else {
-                bolt.record.span("hole")
-            };
-            fault(
-                "plate/hole-too-small",
-                &place,
-                format!(
-                    "{} does not pass a hole of {}",
-                    bolt.thread.name,
-                    units::show(diameter, Quantity::Length)
-                ),
-            )
-            .expecting(format!(
-                "expected above {}",
-                units::show(bolt.thread.diameter, Quantity::Length)
-            ))
-        });
-        if !fits {
+        let record = match own {
+            Some(_) => &plates[plate].record,
+            None => bolt.record,
+        };
+        let span = || record.span("hole");
+        if let Some(fault) = unfit(bolt.thread, (diameter, threaded && plate == far), span) {
+            collector.report(fault);
             return None;
         }
         *radius = diameter / 2.0;
     }
     Some(radii)
+}
+
+/// What is wrong with a hole, m, that a thread passes or that holds it.
+fn unfit(
+    thread: &Thread,
+    (diameter, holds_it): (f64, bool),
+    span: impl Fn() -> Span,
+) -> Option<Fault> {
+    let show = |value| units::show(value, Quantity::Length);
+    let [least, most] = if holds_it {
+        [NARROWEST_MOUTH, WIDEST_MOUTH].map(|share| share * thread.diameter)
+    } else {
+        [thread.diameter, f64::INFINITY]
+    };
+    let (name, hole) = (&thread.name, show(diameter));
+    if diameter <= least {
+        let found = format!("{name} does not pass a hole of {hole}");
+        let fault = fault("plate/hole-too-small", &span(), found);
+        return Some(fault.expecting(format!("expected above {}", show(least))));
+    }
+    (diameter > most).then(|| {
+        fault(
+            "plate/hole-too-wide",
+            &span(),
+            format!("{name} finds no thread in a hole of {hole}"),
+        )
+        .expecting(format!("expected at most {}", show(most)))
+        .help("of a plate that holds the thread leave `hole` out, or give that of the insert")
+    })
 }
 
 /// Hole diameters as the fastener states them.
@@ -175,11 +194,7 @@ fn clear_of_thread(
 }
 
 /// A name that no plate has.
-pub(super) fn unknown_plate(
-    name: &str,
-    span: &crate::joint::tree::Span,
-    plates: &[PlateDraft],
-) -> crate::diagnostic::Fault {
+pub(super) fn unknown_plate(name: &str, span: &Span, plates: &[PlateDraft]) -> Fault {
     let names = || plates.iter().map(|plate| plate.name.as_str());
     fault(
         "name/unknown",

@@ -33,6 +33,14 @@ pub(super) const ENTRIES: &[Entry] = &[
          the hole that is drilled.",
     ),
     fault(
+        "plate/hole-too-wide",
+        "A hole too wide for the thread it holds",
+        "The plate holds the thread, tapped or in an insert, and the hole at its face is more than two and a half \
+         thread diameters wide (house rule, no source): the clamp force would press on nothing there.",
+        "Leave `hole` of that plate out, or give the diameter of the insert or of the recess at the face. If the \
+         bolt passes the plate, give `engagement = { kind = \"nut\" }`.",
+    ),
+    fault(
         "plate/head-beyond-edge",
         "A head or washer larger than its land",
         "The annulus under the head reaches beyond the edge of the plate, or the hole is so large \
