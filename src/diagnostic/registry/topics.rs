@@ -38,8 +38,8 @@ pub(super) const ENTRIES: &[Entry] = &[
              `modulus`. What is not stated (rigid heads, stuck faces, asperities that give, flatness convex \
              or concave) widens low and high.",
             "Limits of size: 3 m along a plate, 0.5 m of thickness or of height of ribs and feet, a thickness \
-             of ten times the shortest side, seats of ten thread diameters. `ringsum schema` prints the JSON \
-             Schema; joints/joint.schema.json gives completion in editors that read `#:schema`. `--set \
+             from 50 µm to ten times the shortest side, seats of ten thread diameters. `ringsum schema` prints \
+             the JSON Schema; joints/joint.schema.json gives completion in editors that read `#:schema`. `--set \
              key=value` overrides any field, and `-` reads the file from standard input.",
         ],
     ),
