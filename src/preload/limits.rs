@@ -377,7 +377,7 @@ mod tests {
         low_proof.grade.proof = Some(datum(300e6));
         let mut soft_nut = supports();
         soft_nut.nut_limit = Some(120e6);
-        for (fastener, supports, ends) in [
+        for (fastener, supports, ends) in vec![
             (m6(), supports(), STRESS),
             (m6_with(|t| t.running = 1.5), supports(), STRESS),
             (m6_with(|t| t.scatter = Some(0.3)), supports(), STRESS),

@@ -183,6 +183,8 @@ fn requirement(joint: &Compared) -> Option<String> {
     let (_, result) = joint.estimate.requirement()?;
     Some(
         match result.met {
+            // Told below the table.
+            Met::Yes if joint.estimate.met_of_heat_alone().is_some() => "met*",
             Met::Yes => "met",
             Met::Uncertain => "uncertain",
             Met::No => "NOT MET",
@@ -278,6 +280,13 @@ fn notes(found: &Comparison) -> String {
             "drawn pairs: an input of the same name lies at the same quantile in both (same lot, same tool); \
              inputs that only one has are independent",
         );
+    }
+    for joint in &found.joints {
+        let met =
+            matches!(joint.estimate.requirement(), Some((_, result)) if result.met == Met::Yes);
+        if let Some(why) = joint.estimate.met_of_heat_alone().filter(|_| met) {
+            tell(&format!("* {}: of heat alone: {why}", plain(&joint.name)));
+        }
     }
     let losses: Vec<&Compared> = found
         .joints

@@ -126,6 +126,7 @@ impl Ended {
 /// The cells of every case of an estimate.
 pub fn estimates(estimate: &Estimate, mass: &Mass) -> Vec<Vec<String>> {
     let requirement = estimate.requirement().map(|(_, result)| match result.met {
+        Met::Yes if estimate.met_of_heat_alone().is_some() => "met of heat alone",
         Met::Yes => "met",
         Met::Uncertain => "uncertain",
         Met::No => "not met",

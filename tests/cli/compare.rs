@@ -46,6 +46,55 @@ fn variants_stand_in_one_table_and_the_best_is_named() {
 }
 
 #[test]
+fn a_joint_that_may_open_is_met_of_heat_alone_wherever_it_is_told() {
+    // The lap keeps its clamp force and its strength.
+    let [open, sound] = ["joints/isolating_mount.toml", "joints/busbar_lap.toml"];
+    let cone = ["--field", "cone", "--draws", "64"];
+    let told = ringsum()
+        .args(["compare", open, sound])
+        .args(cone)
+        .assert()
+        .code(0);
+    let text = stdout(&told);
+    let row = |name: &str| {
+        let rows = text.lines().filter(|line| line.starts_with(name));
+        rows.filter(|line| line.contains("met")).collect::<String>()
+    };
+    assert!(row("isolating_mount").contains("met*"), "{text}");
+    assert!(
+        text.contains("* isolating_mount: of heat alone: the least clamp force"),
+        "{text}"
+    );
+    assert!(row("busbar_lap").contains("met "), "{text}");
+    let reason = |file: &str| -> Value {
+        let run = ringsum().args(["estimate", file, "--json"]).args(cone);
+        let found: Value =
+            serde_json::from_str(&stdout(&run.assert().code(0))).expect("one object");
+        assert_eq!(found["requirement"]["met"], true, "{file}");
+        found["requirement"]["of_heat_alone"].clone()
+    };
+    assert!(reason(open).is_string());
+    assert!(reason(sound).is_null());
+    let folder = tempdir().expect("a folder");
+    let results = folder.path().join("results");
+    ringsum()
+        .args(["estimate", open, sound, "--out"])
+        .arg(&results)
+        .args(cone)
+        .assert()
+        .code(0);
+    let csv = fs::read_to_string(results.join("estimates.csv")).expect("the table");
+    let judged = |file: &str| {
+        let lines = csv.lines().filter(|line| line.contains(file));
+        lines
+            .map(|line| line.contains("met of heat alone"))
+            .collect::<Vec<_>>()
+    };
+    assert_eq!(judged("isolating_mount"), [true], "{csv}");
+    assert_eq!(judged("busbar_lap"), [false], "{csv}");
+}
+
+#[test]
 fn the_json_holds_every_estimate_and_what_else_counts() {
     let told = ringsum()
         .args([

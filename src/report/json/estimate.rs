@@ -318,6 +318,9 @@ struct WorstRequirement {
     /// The case
     #[schemars(extend("enum" = ["service", "hot", "cold"]))]
     case: &'static str,
+    /// Why heat alone is judged by `met`: a limit of strength, or scatter that leaves no clamp force; null where
+    /// nothing lets the joint down otherwise
+    of_heat_alone: Option<&'static str>,
     #[serde(flatten)]
     requirement: RequirementTold,
 }
@@ -396,6 +399,7 @@ pub(super) fn told(estimate: &estimate::Estimate) -> EstimateResult {
         first: estimate.cases.first().map(body),
         requirement: worst.map(|(case, result)| WorstRequirement {
             case,
+            of_heat_alone: estimate.met_of_heat_alone(),
             requirement: requirement(result),
         }),
         cases,
