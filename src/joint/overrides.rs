@@ -168,18 +168,43 @@ fn bad(step: &Step, message: impl Into<String>) -> Fault {
     fault(CODE, &step.span, message)
 }
 
-/// Paths to fields of such a name in the tables of a section: `fastener.torque` for `torque`.
-fn deeper(name: &str, section: &Section) -> Vec<String> {
-    let tables = section.fields.iter().filter_map(|field| match field.kind {
-        Kind::Table(inner) | Kind::List(inner) => Some((field.key, inner)),
-        _ => None,
-    });
-    tables
-        .filter_map(|(table, inner)| {
-            let key = diagnostic::nearest(name, inner.keys())?;
-            Some(format!("{table}.{key}"))
-        })
-        .collect()
+/// Paths that would be taken to fields of such a name in the tables below: `fastener.torque` for `torque`,
+/// `plate.base.thickness` for `thickness`.
+fn deeper(name: &str, node: &Node, section: &Section) -> Vec<String> {
+    let mut paths = Vec::new();
+    for field in section.fields {
+        let (Kind::Table(inner) | Kind::List(inner)) = field.kind else {
+            continue;
+        };
+        let Some(key) = diagnostic::nearest(name, inner.keys()) else {
+            continue;
+        };
+        let table = field.key;
+        let elements = match (field.kind, node.child(table)) {
+            (Kind::List(_), None) => &[],
+            (
+                Kind::List(_),
+                Some(Node {
+                    form: Form::List(elements),
+                    ..
+                }),
+            ) => elements.as_slice(),
+            (Kind::List(_), Some(only)) => std::slice::from_ref(only),
+            _ => {
+                paths.push(format!("{table}.{key}"));
+                continue;
+            }
+        };
+        for (place, element) in elements.iter().enumerate() {
+            let default = default_name(inner, (place, elements.len()));
+            match own_name(element, inner).or(default) {
+                Some(name) => paths.push(format!("{table}.{name}.{key}")),
+                None if elements.len() == 1 => paths.push(format!("{table}.{key}")),
+                None => {}
+            }
+        }
+    }
+    paths
 }
 
 fn set_in(
@@ -200,7 +225,7 @@ fn set_in(
         .expecting("not a key of this table");
         let mut told = told.nearest(&step.name, section.keys());
         if told.help.is_none() {
-            let deeper = deeper(&step.name, section);
+            let deeper = deeper(&step.name, node, section);
             told = told.meaning(&deeper.iter().map(String::as_str).collect::<Vec<_>>());
         }
         return Err(Box::new(if told.help.is_some() {
