@@ -52,10 +52,22 @@ fn beyond_cone(fields: &[(String, &'static str)]) -> String {
 /// What else to try where a field was not found.
 fn way_on(found: &pressure::elastic::Failure) -> &'static str {
     match found {
-        pressure::elastic::Failure::NotConverged { .. } => {
-            "; a plate far thinner than the others defeats it: state a foil as a filler, or take `--field cone` for two plates"
-        }
+        pressure::elastic::Failure::NotConverged { .. } => THIN,
         _ => "",
+    }
+}
+
+/// What defeats the solution, and what to do.
+const THIN: &str = "; a plate far thinner than the others defeats it: state a foil as a filler, or take `--field cone` for two plates";
+
+/// Why the faces do not carry a share of the clamp force, and what to do.
+fn unheld(share: f64) -> String {
+    // So little is missing to the solution, not to a bolt that stands beside the faces.
+    const NEARLY: f64 = 0.01;
+    if (share - 1.0).abs() < NEARLY {
+        format!("the solution is not balanced{THIN}")
+    } else {
+        "bolts press where no faces meet, so the plates would tilt or bend away; put feet or plate under every bolt".to_owned()
     }
 }
 
@@ -198,10 +210,7 @@ pub enum Failure {
     #[error("the elastic contact has no field: {}{}", .0, way_on(.0))]
     Contact(pressure::elastic::Failure),
     /// The faces do not carry the bolts.
-    #[error(
-        "the faces carry {:.0} % of the clamp force: bolts press where no faces meet, so the plates would tilt or bend away; put feet or plate under every bolt",
-        100.0 * share
-    )]
+    #[error("the faces carry {:.1} % of the clamp force: {}", 100.0 * share, unheld(*share))]
     Unbalanced {
         /// Force between the faces over the clamp force, 1.
         share: f64,
@@ -216,7 +225,7 @@ pub enum Failure {
     Heat(resistance::Failure),
     /// No clamp force is left.
     #[error(
-        "no clamp force is left in service at {bolts} of {of} bolts in case `{case}`, so the joint is open there; raise the preload, lengthen the grip or match the expansion"
+        "no clamp force is left in service at {bolts} of {of} bolts in case `{case}`, so the joint is open there; raise the preload, lengthen the grip, match the expansion or take load off the bolts"
     )]
     Open {
         /// Bolts without force.

@@ -28,7 +28,8 @@ pub(super) fn plates(plates: &[PlateDraft], collector: &mut Collector) {
         let name = &plate.name;
         let span = |key: &str| place(&plate.record, key);
         if let Some([thin, thick]) = plate.thickness_ends() {
-            let what = |thickness| format!("plate `{name}` is {} thick", length(thickness));
+            let is = if thin < thick { "may be" } else { "is" };
+            let what = |thickness| format!("plate `{name}` {is} {} thick", length(thickness));
             let span = span("thickness");
             within((&what(thick), &span), (thick, LARGEST_HEIGHT), collector);
             // 50 µm as text is a last digit off 50 µm.

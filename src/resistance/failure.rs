@@ -18,7 +18,10 @@ pub enum Failure {
         residual: f64,
     },
     /// A bolt presses on no part of the faying faces, so its force would be lost.
-    #[error("bolt {} presses on no part of the faying faces in {network}", bolt + 1)]
+    #[error(
+        "bolt {} presses on no part of the faying faces in {network}; give it smaller holes, a wider seat or thicker plates",
+        bolt + 1
+    )]
     NoContact {
         /// Index of the bolt.
         bolt: usize,

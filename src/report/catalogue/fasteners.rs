@@ -114,7 +114,8 @@ fn diameters(record: &Grade, all: &[Grade]) -> String {
         .iter()
         .filter(|other| other.name == record.name)
         .filter_map(|other| other.diameters)
-        .find(|other| other[1] < least);
+        .filter(|other| other[1] < least)
+        .max_by(|one, other| one[1].total_cmp(&other[1]));
     let from = below.map_or_else(
         || brief(least * 1e3),
         |other| format!(">{}", brief(other[1] * 1e3)),
