@@ -35,20 +35,16 @@ pub fn row(name: &str, run: impl FnOnce()) -> Value {
     let many = if found.len() == 1 { "" } else { "s" };
     json!({
         "name": name,
-        "values": format!("{} value{many} {}", found.len(), within(100.0 * largest)),
+        "values": format!("{} value{many} within {:.2} %", found.len(), hundredth_above(100.0 * largest)),
         "accepted": [-1.0, 1.0],
         "band": null,
         "found": found,
     })
 }
 
-/// A deviation in percent; one too small for its digits is said to be so, not to be none.
-fn within(percent: f64) -> String {
-    if percent < 0.005 && percent > 0.0 {
-        "within 0.01 %".to_owned()
-    } else {
-        format!("within {percent:.2} %")
-    }
+/// The hundredth at or above a value: what all are within. A last digit of rounding is no excess.
+fn hundredth_above(value: f64) -> f64 {
+    (100.0 * value - 1e-9).ceil() / 100.0
 }
 
 /// Keeps a part of the evidence, or holds it against what is kept.
