@@ -34,6 +34,14 @@ pub struct RequirementResult {
     pub met: Met,
 }
 
+impl RequirementResult {
+    /// Whether it asks for at least so much resistance, so that more is better.
+    pub fn resists(&self) -> bool {
+        let limits_conductance = matches!(self.kind, RequirementKind::Conductance(_));
+        limits_conductance == (self.bound == Limit::Most)
+    }
+}
+
 /// Low and high of one number by the way the faces are bent, in the order of [`Bend::ALL`].
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Bent(pub [[f64; 2]; 3]);
@@ -72,6 +80,27 @@ impl Bent {
     }
 }
 
+/// Cautions that let a joint down whatever the heat says, the gravest first.
+const LETS_DOWN: [(&str, &str); 5] = [
+    (
+        "preload/never-for-conductance",
+        "a limit of strength does not hold",
+    ),
+    (
+        "preload/negative-service-force",
+        "the least clamp force leaves the joint open",
+    ),
+    ("preload/separation", "the load may part the faces"),
+    (
+        "preload/over-in-service",
+        "load and temperature may break a limit of strength",
+    ),
+    (
+        "preload/hardly-clamped",
+        "the least clamp force leaves next to nothing",
+    ),
+];
+
 impl Estimate {
     /// The case in which the requirement is judged; the first where nothing is required.
     pub fn decisive(&self) -> Option<&CaseResult> {
@@ -80,16 +109,13 @@ impl Estimate {
         judged.or(self.cases.first())
     }
 
-    /// What lets the joint down whatever the heat says: a limit of strength, or scatter that may leave no
-    /// clamp force.
+    /// What lets the joint down whatever the heat says: a limit of strength, a load that parts it, or
+    /// scatter that may leave next to no clamp force.
+    ///
+    /// Checked: `what_lets_a_joint_down_is_told_whatever_the_heat_says`.
     pub fn met_of_heat_alone(&self) -> Option<&'static str> {
         let says = |code| self.cautions.iter().any(|caution| caution.code == code);
-        if says("preload/never-for-conductance") {
-            Some("a limit of strength does not hold")
-        } else if says("preload/negative-service-force") {
-            Some("the least clamp force leaves the joint open")
-        } else {
-            None
-        }
+        let told = LETS_DOWN.iter().find(|(code, _)| says(*code));
+        told.map(|(_, why)| *why)
     }
 }

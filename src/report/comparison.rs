@@ -185,6 +185,7 @@ fn requirement(joint: &Compared) -> Option<String> {
         match result.met {
             // Told below the table.
             Met::Yes if joint.estimate.met_of_heat_alone().is_some() => "met*",
+            Met::Uncertain if joint.estimate.met_of_heat_alone().is_some() => "uncertain*",
             Met::Yes => "met",
             Met::Uncertain => "uncertain",
             Met::No => "NOT MET",
@@ -221,6 +222,9 @@ fn verdicts(found: &Comparison) -> String {
         "best     {}: {what} source to sink at nominal\n",
         plain(&best.name)
     );
+    if let Some(why) = best.estimate.met_of_heat_alone() {
+        let _ = writeln!(text, "         of heat alone: {why}");
+    }
     for joint in &found.joints {
         if let Some(verdict) = joint.verdict {
             let line = format!("against  {}", sentence(joint, best, verdict));
@@ -282,9 +286,8 @@ fn notes(found: &Comparison) -> String {
         );
     }
     for joint in &found.joints {
-        let met =
-            matches!(joint.estimate.requirement(), Some((_, result)) if result.met == Met::Yes);
-        if let Some(why) = joint.estimate.met_of_heat_alone().filter(|_| met) {
+        let starred = requirement(joint).is_some_and(|word| word.ends_with('*'));
+        if let Some(why) = joint.estimate.met_of_heat_alone().filter(|_| starred) {
             tell(&format!("* {}: of heat alone: {why}", plain(&joint.name)));
         }
     }
@@ -322,6 +325,22 @@ fn notes(found: &Comparison) -> String {
             "not in the mass of {}: {}",
             plain(&joint.name),
             plain(&joint.mass.left_out.join("; "))
+        ));
+    }
+    let resist = found.sense == Sense::Resist;
+    let other: Vec<String> = found
+        .joints
+        .iter()
+        .filter(|joint| {
+            let asked = joint.estimate.requirement();
+            asked.is_some_and(|(_, result)| result.resists() != resist)
+        })
+        .map(|joint| plain(&joint.name))
+        .collect();
+    if !other.is_empty() {
+        tell(&format!(
+            "best is the joint that resists most, as one of them must; the requirement of {} asks for the opposite",
+            other.join(", ")
         ));
     }
     let first = found.joints.first().map(|joint| joint.estimate.heat);

@@ -265,7 +265,7 @@ fn remarks(sweep: &TorqueSweep, index: usize) -> Vec<&'static str> {
         );
     } else if sweep.at_limit.is_some() {
         lines.push(if sweep.best_by() == BestBy::Separation {
-            "it is the least torque that keeps the faces together"
+            "it is the least torque that keeps the faces together; any less may part them"
         } else {
             "it is the limit of strength itself, between two rows"
         });

@@ -1,9 +1,13 @@
 //! Cautions of load, springs, inserts and brittle plates, each from a joint that calls for it.
 
-use ringsum::{diagnostic::Caution, estimate::Options, joint, uncertainty};
+use ringsum::{
+    diagnostic::Caution,
+    estimate::{Estimate, Options},
+    joint, uncertainty,
+};
 
-/// Cautions of a joint of two M5 between a plate of some material and aluminium.
-fn cautions((plate, fastener, further): (&str, &str, &str)) -> Vec<Caution> {
+/// A joint of two M5 between a plate of some material and aluminium.
+fn estimate((plate, fastener, further): (&str, &str, &str)) -> Estimate {
     let text = format!(
         r#"
 title = "Strength"
@@ -34,8 +38,11 @@ at = [["15 mm", "15 mm"], ["45 mm", "15 mm"]]
     );
     let joint = joint::read(&text).unwrap_or_else(|faults| panic!("{faults:#?}"));
     let options = Options { draws: 0, seed: 1 };
-    let found = uncertainty::estimate(&joint, &options).expect("a number");
-    found.cautions
+    uncertainty::estimate(&joint, &options).expect("a number")
+}
+
+fn cautions(of: (&str, &str, &str)) -> Vec<Caution> {
+    estimate(of).cautions
 }
 
 const ALUMINIUM: &str =
@@ -60,6 +67,16 @@ fn a_load_that_may_part_the_faces_is_told_with_its_factor() {
         told.contains("2000 N") && told.contains("1.2 times is asked"),
         "{told}"
     );
+}
+
+#[test]
+fn what_lets_a_joint_down_is_told_whatever_the_heat_says() {
+    let with = |load: &str| {
+        let fastener = format!("{TAPPED}\naxial_load = {{ value = \"{load}\", lasting = false }}");
+        estimate((ALUMINIUM, &fastener, "")).met_of_heat_alone()
+    };
+    assert_eq!(with("50 N"), None);
+    assert_eq!(with("2 kN"), Some("the load may part the faces"));
 }
 
 #[test]

@@ -66,6 +66,13 @@ fn a_joint_that_may_open_is_met_of_heat_alone_wherever_it_is_told() {
         "{text}"
     );
     assert!(row("busbar_lap").contains("met "), "{text}");
+    // The best of them is the one that may open, and best as one requirement has it, not the other.
+    assert!(
+        text.contains("nominal\n         of heat alone: the least clamp force"),
+        "{text}"
+    );
+    let opposite = "the requirement of busbar_lap asks for the opposite";
+    assert!(text.replace("\n  ", " ").contains(opposite), "{text}");
     let reason = |file: &str| -> Value {
         let run = ringsum().args(["estimate", file, "--json"]).args(cone);
         let found: Value =

@@ -84,7 +84,9 @@ fn where_separation_bounds_the_best_torque_it_is_named_and_not_strength() {
         let praise = format!("{extreme} source to sink that separation allows");
         assert!(report.contains(&praise), "{report}");
         assert!(
-            report.contains("it is the least torque that keeps the faces together\n"),
+            report.contains(
+                "it is the least torque that keeps the faces together; any less may part them\n"
+            ),
             "{report}"
         );
         let drawing = Drawing::Torque(Box::new(swept.clone()));

@@ -318,8 +318,8 @@ struct WorstRequirement {
     /// The case
     #[schemars(extend("enum" = ["service", "hot", "cold"]))]
     case: &'static str,
-    /// Why heat alone is judged by `met`: a limit of strength, or scatter that leaves no clamp force; null where
-    /// nothing lets the joint down otherwise
+    /// Why `met` is of heat alone: a limit of strength, a load that parts the faces, or scatter that leaves next
+    /// to no clamp force; null where none of these lets the joint down
     of_heat_alone: Option<&'static str>,
     #[serde(flatten)]
     requirement: RequirementTold,

@@ -111,7 +111,7 @@ pub(super) fn torque(sweep: &TorqueSweep) -> Torque {
         let why = match sweep.best_by() {
             BestBy::Minimum => ", the minimum of the curve",
             BestBy::Strength => " that strength allows",
-            BestBy::Separation => " that keeps the faces together",
+            BestBy::Separation => " that keeps the faces together (any less may part them)",
         };
         told.push(format!("Thermally best torque{why}: {} N·m.", four(best)));
     }
