@@ -86,6 +86,11 @@ const FIELDS: &[(&str, &str, Form)] = &[
         "limit under a head",
         Form::In(Quantity::Pressure),
     ),
+    (
+        "diameters",
+        "diameters from, to",
+        Form::In(Quantity::Length),
+    ),
     ("tensile", "tensile strength", Form::In(Quantity::Pressure)),
     ("proof", "proof stress", Form::In(Quantity::Pressure)),
     ("density", "density", Form::In(Quantity::Density)),
