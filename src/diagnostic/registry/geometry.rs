@@ -28,7 +28,8 @@ pub(super) const ENTRIES: &[Entry] = &[
     fault(
         "plate/hole-too-small",
         "A hole that its thread does not pass",
-        "The clearance hole is smaller than the nominal diameter of the thread.",
+        "The clearance hole is smaller than the nominal diameter of the thread, or the hole of the plate that holds \
+         the thread than half of it.",
         "Leave `hole` out to get the medium hole of ISO 273 (5.5 mm for M5, 9 mm for M8), or state \
          the hole that is drilled.",
     ),
